@@ -1,0 +1,40 @@
+import { QueryTypes, type Sequelize } from 'sequelize';
+import { SequelizeStorage, Umzug } from 'umzug';
+import * as first from './migrations/0001-first-tables';
+import type { Migration, Run } from './migrations/types';
+
+/** In order. A migration that has landed is never edited; the next one mends it. */
+const MIGRATIONS: ReadonlyArray<{ name: string; migration: Migration }> = [{ name: '0001-first-tables', migration: first }];
+
+/** Held while migrating, so that several processes that start together do it once. */
+const LOCK = 7_021_984;
+
+export function migrator(sequelize: Sequelize) {
+  const inOneTransaction = (step: (run: Run) => Promise<void>) =>
+    sequelize.transaction(async (transaction) => {
+      await sequelize.query('set local statement_timeout = 0', { transaction });
+      await step(async (sql) => {
+        await sequelize.query(sql, { transaction, type: QueryTypes.RAW });
+      });
+    });
+
+  return new Umzug({
+    migrations: MIGRATIONS.map(({ name, migration }) => ({
+      name,
+      up: () => inOneTransaction(migration.up),
+      down: () => inOneTransaction(migration.down),
+    })),
+    storage: new SequelizeStorage({ sequelize, tableName: 'migrations' }),
+    logger: undefined,
+  });
+}
+
+/** Brings the schema up to date. Returns the names of the migrations that ran. */
+export async function migrate(sequelize: Sequelize): Promise<string[]> {
+  return sequelize.transaction(async (transaction) => {
+    await sequelize.query('set local statement_timeout = 0; set local idle_in_transaction_session_timeout = 0', { transaction });
+    await sequelize.query('select pg_advisory_xact_lock(:lock)', { replacements: { lock: LOCK }, transaction });
+    const done = await migrator(sequelize).up();
+    return done.map((item) => item.name);
+  });
+}

@@ -1,0 +1,42 @@
+import type { Role } from '../core/roles';
+
+/**
+ * Who may do what in a cellar, as data: the one place that decides. Every
+ * service asks it through `authorize`, the screens read it through `may`.
+ */
+export const ACTIONS = {
+  'batches.read': { roles: ['keeper', 'brewer', 'hand', 'guest'], says: 'see batches, their curves and their log' },
+  'batches.create': { roles: ['keeper', 'brewer'], says: 'start a batch' },
+  'batches.update': { roles: ['keeper', 'brewer'], says: 'change a batch' },
+  'entries.create': { roles: ['keeper', 'brewer', 'hand'], says: 'log readings, observations and notes' },
+  'entries.alter': { roles: ['keeper', 'brewer'], says: 'log rackings, additions and pitches' },
+  'entries.remove-own': { roles: ['keeper', 'brewer', 'hand'], says: 'take back an own entry' },
+  'entries.remove': { roles: ['keeper', 'brewer'], says: 'take back any entry' },
+  'alerts.read': { roles: ['keeper', 'brewer', 'hand'], says: 'see alerts' },
+  'alerts.acknowledge': { roles: ['keeper', 'brewer', 'hand'], says: 'take an alert in hand' },
+  'alerts.resolve': { roles: ['keeper', 'brewer', 'hand'], says: 'clear an alert' },
+  'sensors.read': { roles: ['keeper', 'brewer', 'hand'], says: 'see sensors' },
+  'sensors.assign': { roles: ['keeper', 'brewer'], says: 'put a sensor in a batch' },
+  'sensors.manage': { roles: ['keeper'], says: 'make sensors and their credentials' },
+  'members.read': { roles: ['keeper', 'brewer', 'hand', 'guest'], says: 'see who shares the cellar' },
+  'members.manage': { roles: ['keeper'], says: 'invite, change and remove people' },
+  'cellar.manage': { roles: ['keeper'], says: 'change the cellar’s settings' },
+} as const satisfies Record<string, { roles: readonly Role[]; says: string }>;
+
+export type Action = keyof typeof ACTIONS;
+
+/** Who acts, and in which cellar. */
+export interface Actor {
+  personId: string;
+  cellarId: string;
+  role: Role;
+}
+
+export function may(role: Role, action: Action): boolean {
+  return (ACTIONS[action].roles as readonly Role[]).includes(role);
+}
+
+/** All that a role may do, for the screens. */
+export function actionsOf(role: Role): Action[] {
+  return (Object.keys(ACTIONS) as Action[]).filter((action) => may(role, action));
+}

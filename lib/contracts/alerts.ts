@@ -1,0 +1,43 @@
+import { z } from 'zod';
+import { CALL_NAMES } from '../core/types';
+import { callSchema } from './assessment';
+import { id, text, timestamp } from './common';
+
+/** `open`: nobody has it. `acknowledged`: someone said they have it. */
+export const ALERT_STATES = ['open', 'acknowledged', 'resolved'] as const;
+/** `act`: a person acts within the hour. `check`: go and look. `know`: may be done any day. */
+export const ALERT_LEVELS = ['act', 'check', 'know'] as const;
+
+export const alertSchema = z.object({
+  id,
+  batch: z.object({ id, name: z.string(), tag: z.number().nullable(), vessel_kind: z.string(), drink_colour: z.string(), neck: z.string(), volume_l: z.number(), vessel_l: z.number() }),
+  call: z.enum(CALL_NAMES),
+  kind: z.string().nullable(),
+  level: z.enum(ALERT_LEVELS),
+  state: z.enum(ALERT_STATES),
+  /** Since when the call is true, which may be before the alert opened. */
+  since: z.string(),
+  opened_at: z.string(),
+  acknowledged_at: z.string().nullable(),
+  acknowledged_by: z.object({ id, name: z.string() }).nullable(),
+  /** What that person said they will do, and when they look again. */
+  note: z.string().nullable(),
+  look_again_at: z.string().nullable(),
+  resolved_at: z.string().nullable(),
+  /** Null: the program saw that it had passed. */
+  resolved_by: z.object({ id, name: z.string() }).nullable(),
+  /** The call as it was when the alert opened. */
+  evidence: callSchema,
+  /** Who was told, when, by which means, and whether it went. */
+  told: z.array(z.object({ person: z.string(), means: z.literal('mail'), at: z.string().nullable(), state: z.enum(['waiting', 'sent', 'failed']), error: z.string().nullable() })),
+});
+export type AlertBody = z.infer<typeof alertSchema>;
+
+export const alertList = z.object({ items: z.array(alertSchema), counts: z.object({ open: z.number(), acknowledged: z.number(), resolved: z.number() }), next_cursor: z.string().nullable() });
+export const alertQuery = z.object({ state: z.enum(ALERT_STATES).optional(), batch: id.optional(), cursor: z.string().max(200).optional(), limit: z.coerce.number().int().min(1).max(200).default(50) });
+
+export const acknowledgeAlert = z.object({ note: text(500).nullable().default(null), look_again_at: timestamp.nullable().default(null) });
+export type AcknowledgeAlert = z.infer<typeof acknowledgeAlert>;
+
+/** A person says that it was no fault, or that it is done. */
+export const resolveAlert = z.object({ note: text(500).nullable().default(null) });
