@@ -9,6 +9,8 @@ import { FloatSensor, ordinaryTraits, type SensorTraits } from './sensor';
 const HOUR = 3_600_000;
 /** A home hydrometer is read to about this, points (sd). */
 const HYDROMETER_POINTS = 0.5;
+/** From the link's return to the backlog's arrival. */
+const BACKLOG_MS = 2_000;
 
 export interface SeriesOptions {
   seed: number;
@@ -20,8 +22,9 @@ export interface SeriesOptions {
 
 /** A reading as it is sent, when it gets there, and what was really the case. */
 export interface SimulatedReading {
-  /** By the sensor's clock. */
+  /** By the sensor's clock, which may be wrong. */
   at: Instant;
+  measuredAt: Instant;
   arrivesAt: Instant;
   body: TelemetryReading & { at: string };
   truth: Truth;
@@ -37,7 +40,7 @@ export interface SimulatedBatch {
   /** What the keeper knows, in the form that the analysis takes. */
   setup: BatchSetup;
   events: SimulatedEvent[];
-  /** By the time of measuring. Not all have arrived by the end. */
+  /** All measured up to the end, in that order; some arrive only after it. */
   readings: SimulatedReading[];
 }
 
@@ -94,7 +97,9 @@ export function* series(scenario: Scenario, options: SeriesOptions): Generator<S
     const at = measuredAt + traits.clockHours * HOUR;
     yield {
       at,
-      arrivesAt: Math.round((gap ? start + gap.toH * HOUR : measuredAt) + travel),
+      measuredAt,
+      // A backlog comes in one go, in the order in which it was kept.
+      arrivesAt: gap ? start + gap.toH * HOUR + BACKLOG_MS : Math.round(measuredAt + travel),
       body: { at: stamp(at), ...measured, sequence },
       truth,
     };
@@ -138,11 +143,25 @@ export function setupOf(scenario: Scenario, { seed, start }: SeriesOptions): Omi
 /** A whole batch from its pitch to `end`: set-up, log and readings, the same every time for the same arguments. */
 export function generate(scenario: Scenario, options: SeriesOptions & { end: Instant }): SimulatedBatch {
   const readings: SimulatedReading[] = [];
-  const lastStamp = options.end + (scenario.sensor.clockHours ?? 0) * HOUR;
   for (const reading of series(scenario, options)) {
-    if (reading.at > lastStamp) break;
+    if (reading.measuredAt > options.end) break;
     readings.push(reading);
   }
   const events = loggedEvents(scenario, options, options.end);
   return { scenario, setup: { ...setupOf(scenario, options), events }, events, readings };
+}
+
+/** The same readings in the order in which they get there: what a broken link held back comes later. */
+export function* byArrival(readings: Iterable<SimulatedReading>): Generator<SimulatedReading, void> {
+  let held: SimulatedReading[] = [];
+  const release = function* (until: Instant) {
+    const due = held.filter((reading) => reading.arrivesAt <= until).sort((one, other) => one.arrivesAt - other.arrivesAt);
+    if (due.length > 0) held = held.filter((reading) => reading.arrivesAt > until);
+    yield* due;
+  };
+  for (const reading of readings) {
+    yield* release(reading.measuredAt);
+    held.push(reading);
+  }
+  yield* release(Infinity);
 }
