@@ -1,4 +1,7 @@
+import { ACTION_NAMES, type Action } from '../core/actions';
 import type { Role } from '../core/roles';
+
+export type { Action } from '../core/actions';
 
 /**
  * Who may do what in a cellar, as data: the one place that decides. Every
@@ -21,9 +24,7 @@ export const ACTIONS = {
   'members.read': { roles: ['keeper', 'brewer', 'hand', 'guest'], says: 'see who shares the cellar' },
   'members.manage': { roles: ['keeper'], says: 'invite, change and remove people' },
   'cellar.manage': { roles: ['keeper'], says: 'change the cellar’s settings' },
-} as const satisfies Record<string, { roles: readonly Role[]; says: string }>;
-
-export type Action = keyof typeof ACTIONS;
+} as const satisfies Record<Action, { roles: readonly Role[]; says: string }>;
 
 /** Who acts, and in which cellar. */
 export interface Actor {
@@ -38,5 +39,5 @@ export function may(role: Role, action: Action): boolean {
 
 /** All that a role may do, for the screens. */
 export function actionsOf(role: Role): Action[] {
-  return (Object.keys(ACTIONS) as Action[]).filter((action) => may(role, action));
+  return ACTION_NAMES.filter((action) => may(role, action));
 }

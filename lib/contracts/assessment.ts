@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { timestamp } from './common';
 import { CALL_NAMES, STAGES, VERDICTS, type Assessment, type Call, type Estimate, type Instant, type Judgement, type WideEstimate } from '../core/types';
 
 const estimate = z.object({ value: z.number(), lo: z.number(), hi: z.number() });
@@ -106,3 +107,13 @@ export function presentJudgement(judgement: Judgement): JudgementBody {
     gas: judgement.gas.map((item) => ({ at: iso(item.at), value: rounded(item.value, 4) })),
   };
 }
+
+/** `GET /api/v1/batches/{id}/assessment[?at=]`. */
+export const assessmentQuery = z.object({ at: timestamp.optional() });
+
+/** `GET /api/v1/batches/{id}/assessments`: the past verdicts, newest first, each kept when it changed. */
+export const verdictChangeList = z.object({
+  items: z.array(z.object({ at: z.string(), changed: z.array(z.enum(CALL_NAMES)), assessment: assessmentSchema })),
+  next_cursor: z.string().nullable(),
+});
+export type VerdictChangeList = z.infer<typeof verdictChangeList>;

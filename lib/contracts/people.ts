@@ -26,3 +26,6 @@ export const signInList = z.object({ items: z.array(signInSchema) });
 
 export const memberSchema = z.object({ person: z.object({ id, name: z.string(), email: z.string() }), role: z.enum(ROLES), since: z.string() });
 export const memberList = z.object({ items: z.array(memberSchema) });
+
+/** `POST /api/v1/cellars/active`: which of the person's cellars the browser shows. */
+export const chooseCellar = z.object({ cellar_id: id });

@@ -1,0 +1,29 @@
+'use client';
+
+import type { z } from 'zod';
+import type { createEntry as createEntrySchema, EntryBody, entryList } from '../contracts/batches';
+import { isOfBatch } from './batches';
+import { sendJson, withQuery } from './fetcher';
+import { isPath, refresh, useResource } from './use-resource';
+
+export type NewEntry = z.input<typeof createEntrySchema>;
+
+/** The log of a batch, newest first. */
+export function useEntries(batchId: string | null, query: { limit?: number; cursor?: string } = {}) {
+  const { data, ...rest } = useResource<z.infer<typeof entryList>>(batchId && withQuery(`/batches/${batchId}/entries`, query));
+  return { entries: data?.items, nextCursor: data?.next_cursor ?? null, ...rest };
+}
+
+const refreshBatch = (batchId: string) => refresh((path) => isOfBatch(batchId)(path) || isPath('/shelf')(path));
+
+/** Gives the entry a `client_id` where it has none, so that a second try after a lost answer keeps one entry. */
+export async function createEntry(batchId: string, input: NewEntry): Promise<EntryBody> {
+  const entry = await sendJson<EntryBody>('POST', `/batches/${batchId}/entries`, { ...input, client_id: input.client_id ?? crypto.randomUUID() });
+  await refreshBatch(batchId);
+  return entry;
+}
+
+export async function removeEntry(batchId: string, entryId: string): Promise<void> {
+  await sendJson('DELETE', `/batches/${batchId}/entries/${entryId}`);
+  await refreshBatch(batchId);
+}
