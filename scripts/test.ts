@@ -1,0 +1,67 @@
+import { spawn } from 'node:child_process';
+import { mkdtempSync, readFileSync, rmSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join, resolve } from 'node:path';
+
+const ROOT = resolve(import.meta.dirname, '..');
+
+/** Suites in the order of their cost, each in a run of its own: two cores and one database do not share well. */
+const SUITES = [['unit', 'reference'], ['evaluation'], ['integration'], ['fault'], ['browser']];
+
+interface Count {
+  passed: number;
+  failed: number;
+}
+
+function run(command: string, args: string[]): Promise<number> {
+  return new Promise((done, reject) => {
+    spawn(command, args, { cwd: ROOT, stdio: ['ignore', 'inherit', 'inherit'], env: { ...process.env, NEXT_TELEMETRY_DISABLED: '1', NODE_ENV: undefined } })
+      .on('error', reject)
+      .on('exit', (code) => done(code ?? 1));
+  });
+}
+
+async function check(name: string, script: string): Promise<Count> {
+  console.log(`\n== ${name}`);
+  const code = await run('npm', ['run', '--silent', script]);
+  return code === 0 ? { passed: 1, failed: 0 } : { passed: 0, failed: 1 };
+}
+
+async function suite(projects: string[], folder: string): Promise<Count> {
+  console.log(`\n== ${projects.join(', ')}`);
+  const report = join(folder, `${projects[0]}.json`);
+  const code = await run('npx', ['vitest', 'run', ...projects.flatMap((project) => ['--project', project]), '--reporter=dot', '--reporter=json', `--outputFile.json=${report}`]);
+  let counted: Count;
+  try {
+    const json = JSON.parse(readFileSync(report, 'utf8')) as { numPassedTests: number; numFailedTests: number };
+    counted = { passed: json.numPassedTests, failed: json.numFailedTests };
+  } catch {
+    return { passed: 0, failed: 1 };
+  }
+  // A file that could not be loaded has no test to fail.
+  return code !== 0 && counted.failed === 0 ? { ...counted, failed: 1 } : counted;
+}
+
+async function main(): Promise<void> {
+  const only = process.argv.slice(2);
+  const wanted = (name: string) => only.length === 0 || only.includes(name);
+  const folder = mkdtempSync(join(tmpdir(), 'fallbright-results-'));
+  const began = Date.now();
+  const total: Count = { passed: 0, failed: 0 };
+  const add = (count: Count) => {
+    total.passed += count.passed;
+    total.failed += count.failed;
+  };
+  if (wanted('lint')) add(await check('lint', 'lint'));
+  if (wanted('types')) add(await check('types', 'typecheck'));
+  for (const projects of SUITES) {
+    const chosen = projects.filter(wanted);
+    if (chosen.length > 0) add(await suite(chosen, folder));
+  }
+  rmSync(folder, { recursive: true, force: true });
+  console.log(`\nTook ${Math.round((Date.now() - began) / 1000)} s.`);
+  console.log(`${total.passed} passed, ${total.failed} failed`);
+  process.exitCode = total.failed > 0 ? 1 : 0;
+}
+
+await main();
