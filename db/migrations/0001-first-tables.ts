@@ -234,6 +234,8 @@ export const up: Migration['up'] = async (run) => {
       payload jsonb not null,
       created_at timestamptz not null default now(),
       next_attempt_at timestamptz not null default now(),
+      -- A sender that has taken it; when that time passes the sender died and another may.
+      leased_until timestamptz,
       attempts integer not null default 0,
       sent_at timestamptz,
       failed_at timestamptz,
@@ -241,6 +243,15 @@ export const up: Migration['up'] = async (run) => {
     )`);
   await run(`create index outbox_due on outbox (next_attempt_at) where sent_at is null and failed_at is null`);
   await run(`create index outbox_alert on outbox (alert_id)`);
+  await run(`create index outbox_person on outbox (person_id) where sent_at is null and failed_at is null`);
+
+  // Where the watch over the house's own parts stands (is the ingest up, and since when).
+  await run(`
+    create table system_states (
+      rule text primary key,
+      state jsonb not null,
+      updated_at timestamptz not null default now()
+    )`);
 
   await run(`
     create table audit (
@@ -267,6 +278,6 @@ export const up: Migration['up'] = async (run) => {
 
 export const down: Migration['down'] = async (run) => {
   await run(`
-    drop table if exists heartbeats, audit, outbox, alert_states, alerts, assessments, batch_states, refusals,
+    drop table if exists heartbeats, audit, system_states, outbox, alert_states, alerts, assessments, batch_states, refusals,
       sensor_latest, readings, assignments, sensors, entries, batches, memberships, cellars, sign_ins, people cascade`);
 };

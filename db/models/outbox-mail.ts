@@ -10,6 +10,7 @@ export class OutboxMail extends Model<InferAttributes<OutboxMail>, InferCreation
   declare payload: Record<string, unknown>;
   declare createdAt: CreationOptional<Date>;
   declare nextAttemptAt: CreationOptional<Date>;
+  declare leasedUntil: CreationOptional<Date | null>;
   declare attempts: CreationOptional<number>;
   declare sentAt: CreationOptional<Date | null>;
   declare failedAt: CreationOptional<Date | null>;
@@ -27,6 +28,7 @@ export class OutboxMail extends Model<InferAttributes<OutboxMail>, InferCreation
         payload: DataTypes.JSONB,
         createdAt: DataTypes.DATE,
         nextAttemptAt: DataTypes.DATE,
+        leasedUntil: DataTypes.DATE,
         attempts: DataTypes.INTEGER,
         sentAt: DataTypes.DATE,
         failedAt: DataTypes.DATE,
