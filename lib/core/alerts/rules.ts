@@ -1,0 +1,93 @@
+import type { CallName, Neck, Verdict } from '../types';
+import type { Timing } from './machine';
+
+/** `act`: a person acts within the hour. `check`: go and look. `know`: may be done any day. */
+export type AlertLevel = 'act' | 'check' | 'know';
+
+export const RULE_NAMES = ['overdue', 'foam', 'neck', 'stalled', 'temperature', 'sensor', 'rack', 'bottle', 'refermentation'] as const;
+export type RuleName = (typeof RULE_NAMES)[number];
+
+/** Which call, in which verdict, becomes an alert, and how patiently. */
+export interface AlertRule extends Timing {
+  name: RuleName;
+  call: CallName;
+  level: AlertLevel;
+  verdicts: readonly Verdict[];
+  /** Only with one of these kinds; null: any kind. */
+  kinds: readonly string[] | null;
+  /** Never with one of these kinds: another rule has them. */
+  notKinds: readonly string[];
+  /** Only while the neck is closed by one of these; null: whatever closes it. */
+  necks: readonly Neck[] | null;
+  /** Data older than this say nothing about now; null: the call is about the silence itself. */
+  freshMs: number | null;
+  /** Those who were told that it began are told that it is over. */
+  tellsEnd: boolean;
+  /** The rule as a person reads it. */
+  sentence: string;
+}
+
+const MINUTE = 60_000;
+const HOUR = 60 * MINUTE;
+const DAY = 24 * HOUR;
+
+const ACT = { level: 'act', restMs: 6 * HOUR, repeatMs: 4 * HOUR, repeats: 3, tellsEnd: true } as const;
+const CHECK = { level: 'check', restMs: DAY, repeatMs: DAY, repeats: 3, tellsEnd: true } as const;
+const KNOW = { level: 'know', restMs: DAY, repeatMs: null, repeats: 0, tellsEnd: false } as const;
+const ANY = { kinds: null, notKinds: [], necks: null } as const;
+
+/**
+ * The rules that hold where nobody chose others. The spans are our own: the
+ * calls have their own patience (they hold over several looks), so `forMs` only
+ * has to outlast a doubtful hour; one opening a day follows the advice on alarm
+ * floods (ANSI/ISA-18.2-2016, from memory).
+ */
+export const ALERT_RULES: readonly AlertRule[] = [
+  {
+    ...ANY, ...CHECK, name: 'overdue', call: 'started', verdicts: ['hold'], forMs: HOUR, keepMs: 3 * HOUR, freshMs: 12 * HOUR,
+    sentence: 'When a start is overdue for 1 h.',
+  },
+  {
+    // A blow-off tube is made for foam: with one on, foam is no news.
+    ...ANY, ...ACT, name: 'foam', call: 'neck', verdicts: ['hold'], necks: ['airlock', 'bung', 'open'], forMs: 15 * MINUTE, keepMs: 3 * HOUR, freshMs: 6 * HOUR,
+    sentence: 'When foam may reach a neck that has no blow-off tube, for 15 min.',
+  },
+  {
+    ...ANY, ...KNOW, name: 'neck', call: 'neck', verdicts: ['yes'], necks: ['blow_off'], forMs: HOUR, keepMs: 3 * HOUR, freshMs: 12 * HOUR,
+    sentence: 'When the blow-off tube can make way for an airlock, for 1 h.',
+  },
+  {
+    ...ANY, ...CHECK, name: 'stalled', call: 'stalled', verdicts: ['yes'], forMs: HOUR, keepMs: 6 * HOUR, freshMs: 12 * HOUR,
+    sentence: 'When the fall is slow, stuck or stopped by cold for 1 h.',
+  },
+  {
+    ...ANY, ...CHECK, name: 'temperature', call: 'temperature', verdicts: ['yes', 'hold'], forMs: HOUR, keepMs: 2 * HOUR, freshMs: 6 * HOUR,
+    sentence: 'When the temperature is outside the batch’s range for 1 h.',
+  },
+  {
+    ...ANY, ...CHECK, name: 'sensor', call: 'sensor', verdicts: ['yes', 'hold'], forMs: 30 * MINUTE, keepMs: 30 * MINUTE, freshMs: null,
+    sentence: 'When the sensor is silent, frozen or drifting for 30 min.',
+  },
+  {
+    ...ANY, ...KNOW, name: 'rack', call: 'rack', verdicts: ['yes'], forMs: 3 * HOUR, keepMs: HOUR, freshMs: 36 * HOUR,
+    sentence: 'When it can be racked, for 3 h.',
+  },
+  {
+    // Withdrawn at once and said aloud: somebody told "ready" may be washing bottles.
+    ...ANY, ...KNOW, name: 'bottle', call: 'bottle', verdicts: ['yes'], notKinds: ['refermentation'], forMs: 6 * HOUR, keepMs: 0, freshMs: 36 * HOUR, tellsEnd: true,
+    sentence: 'When it can be bottled, for 6 h; and at once when that is no longer so.',
+  },
+  {
+    ...ANY, ...ACT, name: 'refermentation', call: 'bottle', verdicts: ['yes', 'hold', 'no', 'soon'], kinds: ['refermentation'], forMs: 0, keepMs: DAY, freshMs: 36 * HOUR,
+    sentence: 'When a batch thought finished begins to fall again.',
+  },
+];
+
+const BY_NAME = new Map(ALERT_RULES.map((rule) => [rule.name, rule]));
+
+/** The rule of that name. @throws RangeError for a name that is none. */
+export function ruleNamed(name: string): AlertRule {
+  const rule = BY_NAME.get(name as RuleName);
+  if (!rule) throw new RangeError(`There is no alert rule ${name}.`);
+  return rule;
+}
