@@ -142,7 +142,7 @@ export class FloatSensor {
   private bubble(hours: number, passedH: number, strength: number): number {
     const chance = this.draws.burst();
     const length = between(this.draws.burst, 1, 7);
-    if (strength > 0.02 && hours > this.burstUntilH && chance < (this.traits.burstsPerDay * passedH) / 24) this.burstUntilH = hours + length;
+    if (strength > 0.1 && hours > this.burstUntilH && chance < (this.traits.burstsPerDay * passedH) / 24) this.burstUntilH = hours + length;
     const lifted = this.draws.bubble() < (hours < this.burstUntilH ? 0.5 : this.traits.bubbleShare);
     const height = between(this.draws.bubble, 3, hours < this.burstUntilH ? 10 : 20);
     return lifted ? height : 0;

@@ -122,7 +122,7 @@ export const healthy: Scenario[] = [
   {
     name: 'ready-to-rack',
     title: 'Crab cider',
-    shows: 'Under two points from its end and hardly moving: ready to come off its lees.',
+    shows: 'Two points from its end and hardly moving: ready to come off its lees.',
     kind: 'cider',
     volumeL: 4.5,
     vessel: { kind: 'demijohn', litres: 5 },
@@ -137,7 +137,7 @@ export const healthy: Scenario[] = [
       { atH: 15 * 24, kind: 'reading', text: 'Hydrometer, clearing from the top.' },
       { atH: 21 * 24, kind: 'reading', text: 'Hydrometer.' },
     ],
-    ageH: 22 * 24,
+    ageH: 24 * 24,
   },
   {
     name: 'finished',
