@@ -1,0 +1,81 @@
+import type { Call } from '../types';
+import { VOLUMES_PER_POINT } from '../gas/gas';
+import { finalGravityHalfWidths } from '../fit/intervals';
+import { later, sinceOf, when, type Scene } from './scene';
+import { call, evidence, gravityWords, pointsWords, rateWords } from './words';
+
+/** Volumes of CO2 that could still come in the bottle, at the upper end of what may be left (9 in 10). */
+export function worstExtraVolumes(scene: Scene): number | null {
+  const { watch, level } = scene;
+  const fit = watch.fit();
+  if (level === null || !fit) return null;
+  const { half80 } = finalGravityHalfWidths(fit.fgSd, watch.progress());
+  return Math.max(0, level - fit.parameters[1]! + half80) * VOLUMES_PER_POINT;
+}
+
+/** Has it stopped for good? The one call that is wrong only on the safe side. */
+export function bottleCall(scene: Scene): Call {
+  const { watch, level, rate } = scene;
+  const top = watch.zoneTop();
+  const worst = worstExtraVolumes(scene);
+  const figures = [
+    ...(level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG')]),
+    ...(rate ? [evidence('fall', rate.value, 0.25, 'points/d')] : []),
+    ...(worst === null ? [] : [evidence('worst extra carbonation', worst, 1, 'volumes')]),
+  ];
+  const changesIt = `Changes it: ${gravityWords(top)} or less and no fall for ${Math.round(Math.max(72, Math.min(168, 0.2 * watch.age)))} h.`;
+  if (watch.refermenting.on) {
+    const fallen = level !== null && watch.plateau !== null ? pointsWords(watch.plateau - level) : 'More than 1.5 points';
+    return call('hold', 'Do not bottle: it works again.', `${fallen} below where it had come to rest.`, {
+      kind: 'refermentation',
+      since: sinceOf(scene, watch.refermenting.since),
+      evidence: figures,
+      act: 'Leave it under an airlock; if it is in bottles already, keep them cold and open them with care.',
+      changesIt: 'Changes it: a new level that holds.',
+    });
+  }
+  if (!watch.started.on) return call(scene.silentH === null ? 'unknown' : 'no', 'Not yet: it has not started.', 'All its sugar is still to come.', { evidence: figures });
+  if (watch.frozen || scene.silent || level === null) {
+    return call('unknown', 'Not known whether it has stopped.', 'The sensor gives nothing to go by.', {
+      evidence: figures,
+      act: 'Take two hydrometer readings three days apart.',
+      changesIt: `Changes it: two equal readings at ${gravityWords(top)} or less.`,
+    });
+  }
+  if (watch.bottle.on) {
+    const since = sinceOf(scene, watch.bottle.since);
+    return call('yes', `May be bottled: since ${since === null ? 'now' : when(scene, since)}.`, `${gravityWords(level)} and level; ${worst === null ? '' : `at worst ${worst.toFixed(1)} volumes more in the bottle.`}`, {
+      since,
+      evidence: figures,
+      act: worst !== null && worst >= 1 ? 'Check the gravity with a hydrometer before you prime.' : 'Prime for the bottles you have, not for more.',
+      changesIt: 'Changes it: a fall of 0.5 points a day.',
+    });
+  }
+  if (watch.stuck.on) {
+    return call('hold', 'Do not bottle: sugar is left.', `Stopped at ${gravityWords(level)}, ${pointsWords(level - watch.fgPrior().mean)} above the expected end.`, {
+      since: sinceOf(scene, watch.stuck.since),
+      evidence: figures,
+      act: 'See to the stall first.',
+      changesIt,
+    });
+  }
+  const hours = hoursToBottle(scene);
+  const expectedAt = hours === null ? null : later(scene, hours);
+  if (expectedAt !== null && hours !== null && hours <= 96 && watch.terminal.on) {
+    return call('soon', `Bottling: from about ${when(scene, expectedAt)}.`, `${gravityWords(level)}, ${rate ? rateWords(rate.value) : 'hardly falling'}; it must hold that long.`, { expectedAt, evidence: figures, changesIt });
+  }
+  return call('no', 'Not yet: it still works.', `${gravityWords(level)} now${rate ? `, falling ${rateWords(rate.value)}` : ''}.`, { expectedAt: watch.progress() > 0.65 && !watch.sluggish.on ? expectedAt : null, evidence: figures, changesIt });
+}
+
+/** Hours until the curve has half a point left, and then the days it must hold; null without a curve that ends in the zone. */
+function hoursToBottle(scene: Scene): number | null {
+  const { watch, hour } = scene;
+  const fit = watch.fit();
+  if (!fit || fit.curve.fg > watch.zoneTop()) return null;
+  const { curve } = fit;
+  const drop = Math.max(0.6, curve.og - curve.fg);
+  const warmth = watch.track.warmthAt(hour);
+  const tau0 = watch.track.tauAt(hour) - watch.track.tauAt(watch.segment.from);
+  const tau = Math.max(tau0, curve.tauOfShare(0.5 / drop));
+  return ((tau - tau0) / warmth) * 24 + 76;
+}

@@ -1,0 +1,66 @@
+import type { Call } from '../types';
+import { gasLPerH } from '../gas/gas';
+import { later, sinceOf, when, type Scene } from './scene';
+import { call, evidence, gasWords } from './words';
+
+/** `yes`: swap the blow-off tube for an airlock. `hold`: foam may reach the neck, leave the tube. */
+export function neckCall(scene: Scene): Call {
+  const { watch, gas } = scene;
+  const limit = watch.swapGas();
+  const figures = gas ? [evidence('gas', gas.value, limit, 'L/h')] : [];
+  const changesIt = `Changes it: gas ${gasWords(limit)} for nine hours.`;
+  if (watch.neck === 'airlock' || watch.neck === 'bung') {
+    const busy = gas !== null && gas.lo > 1.3 * limit;
+    if (busy) {
+      return call('hold', 'Foam may reach the airlock.', `Gas ${gasWords(gas.value)}; an airlock here is safe under ${gasWords(limit)}.`, {
+        evidence: figures,
+        act: 'Put the blow-off tube back on.',
+        changesIt,
+      });
+    }
+    return call('no', watch.neck === 'airlock' ? 'Airlock is on already.' : 'Bung is in already.', gas ? `Gas ${gasWords(gas.value)}, limit ${gasWords(limit)}.` : 'No gas figure now.', {
+      since: sinceOf(scene, watch.neckSince),
+      evidence: figures,
+      act: watch.neck === 'bung' && gas !== null && gas.hi > 0.02 ? 'Never stop a vessel that works: fit an airlock.' : null,
+    });
+  }
+  if (watch.airlock.on) {
+    const since = sinceOf(scene, watch.airlock.since);
+    return call('yes', `Swap tube for airlock: from ${since === null ? 'now' : when(scene, since)}.`, gas ? `Krausen falling; gas ${gasWords(gas.value)}, under ${gasWords(limit)}.` : 'Krausen falling.', {
+      since,
+      evidence: figures,
+      act: 'Swap the tube for an airlock with water in it.',
+      changesIt: `Changes it: gas over ${gasWords(1.3 * limit)}.`,
+    });
+  }
+  if (!watch.started.on) {
+    return call(scene.silentH === null ? 'unknown' : 'no', 'Leave the tube on.', 'Not working yet; the strong gas is still to come.', { evidence: figures, changesIt });
+  }
+  if (!gas || scene.silent || watch.frozen) {
+    return call('unknown', 'Leave the tube on.', 'The gas is not known while the sensor gives nothing to go by.', { act: 'Look at the foam before you swap.', changesIt });
+  }
+  const expected = watch.peaked.on ? hoursToSwap(scene, limit) : null;
+  if (expected !== null && expected < 72) {
+    const at = later(scene, expected);
+    return call('soon', `Swap tube for airlock: from ${when(scene, at)}.`, `Krausen falling; gas ${gasWords(gas.value)}, under ${gasWords(limit)} by then.`, { expectedAt: at, evidence: figures, changesIt });
+  }
+  return call('hold', 'Leave the tube on.', watch.peaked.on ? `Gas ${gasWords(gas.value)}; an airlock is safe under ${gasWords(limit)}.` : `Krausen still building; gas ${gasWords(gas.value)}.`, {
+    since: sinceOf(scene, watch.started.since),
+    evidence: figures,
+    changesIt,
+  });
+}
+
+/** Hours until the curve's gas is under the limit, with the nine hours it must stay there; null without a curve. */
+function hoursToSwap(scene: Scene, limit: number): number | null {
+  const { watch, hour } = scene;
+  const fit = watch.fit();
+  if (!fit) return null;
+  const warmth = watch.track.warmthAt(hour);
+  const tau = watch.track.tauAt(hour) - watch.track.tauAt(watch.segment.from);
+  for (let ahead = 0; ahead <= 240; ahead += 3) {
+    const rate = fit.curve.rate(tau + (ahead / 24) * warmth) * warmth;
+    if (gasLPerH(rate, watch.setup.volumeL) < limit) return ahead + 9;
+  }
+  return null;
+}

@@ -1,0 +1,50 @@
+import type { Call } from '../types';
+import { later, sinceOf, when, type Scene } from './scene';
+import { call, evidence, gravityWords, pointsWords, rateWords } from './words';
+
+/** May it come off the lees? */
+export function rackCall(scene: Scene): Call {
+  const { watch, level, rate } = scene;
+  const top = watch.zoneTop();
+  const figures = level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG'), ...(rate ? [evidence('fall', rate.value, 1.2, 'points/d')] : [])];
+  const changesIt = `Changes it: ${gravityWords(top)} or less and a fall under 1.2 points a day.`;
+  if (!watch.started.on) return call(scene.silentH === null ? 'unknown' : 'no', 'Not yet: it has not started.', 'Racking comes at the end of the fall.', { changesIt });
+  if (watch.rack.on && level !== null) {
+    const since = sinceOf(scene, watch.rack.since);
+    return call('yes', `May be racked: since ${since === null ? 'now' : when(scene, since)}.`, `${gravityWords(level)}, ${rate ? rateWords(rate.value) : 'hardly falling'}.`, {
+      since,
+      evidence: figures,
+      act: 'Rack off the lees when it suits; full to the neck, airlock on.',
+      changesIt: 'Changes it: a fall of more than 1.5 points a day.',
+    });
+  }
+  if (watch.stuck.on && level !== null) return call('no', 'Not yet: it has stopped early.', `${gravityWords(level)}; racking takes yeast away that is still needed.`, { evidence: figures, changesIt });
+  if (watch.frozen || scene.silent || level === null) return call('unknown', 'Not known.', 'The sensor gives nothing to go by.', { act: 'Read by hand.', changesIt });
+  const hours = hoursToRack(scene);
+  const expectedAt = hours === null ? null : later(scene, hours);
+  const left = watch.remaining();
+  if (hours !== null && expectedAt !== null && hours <= 72 && watch.peaked.on && watch.progress() > 0.65) {
+    return call('soon', `Racking: from about ${when(scene, expectedAt)}.`, `${gravityWords(level)} now${left === null ? '' : `, ${pointsWords(Math.max(0, left))} to go`}.`, { expectedAt, evidence: figures, changesIt });
+  }
+  return call('no', 'Leave it on the lees.', `${gravityWords(level)} now${rate ? `, falling ${rateWords(rate.value)}` : ''}.`, {
+    expectedAt: watch.progress() > 0.4 && !watch.sluggish.on ? expectedAt : null,
+    evidence: figures,
+    changesIt,
+  });
+}
+
+/** Hours until the curve has 2 points left and falls by less than 1.2 a day; null without a curve. */
+function hoursToRack(scene: Scene): number | null {
+  const { watch, hour } = scene;
+  const fit = watch.fit();
+  if (!fit || fit.curve.fg > watch.zoneTop()) return null;
+  const { curve } = fit;
+  const drop = curve.og - curve.fg;
+  if (drop <= 2) return 0;
+  const warmth = watch.track.warmthAt(hour);
+  const tau0 = watch.track.tauAt(hour) - watch.track.tauAt(watch.segment.from);
+  let tau = Math.max(tau0, curve.tauOfShare(2 / drop));
+  if (!Number.isFinite(tau)) return null;
+  for (let i = 0; i < 60 && curve.rate(tau) * warmth > 1.2; i += 1) tau += 0.25;
+  return ((tau - tau0) / warmth) * 24 + 9;
+}

@@ -1,0 +1,129 @@
+/**
+ * The reduced kinetic curve (our own), in thermal time τ (days at 20 °C):
+ *
+ *   dS/dτ = −k a(τ) S/(Kr + S) (1 − δ(1 − S)),  S(0) = 1,  g = FG + (OG − FG) S
+ *   a(τ) = 1/(1 + exp(−(τ − m)/w)),  w = 0.18 m + 0.02
+ *
+ * S is the share of the whole fall still to come, m the onset (lag and growth),
+ * Kr where uptake stops being saturated, δ the inhibition that grows with alcohol
+ * and age. The equation separates, so it is solved and not stepped:
+ *
+ *   (Kr/D) ln(S/(D + δS)) + ln(D + δS)/δ = −k A(τ),  D = 1 − δ,  A = ∫a dτ
+ *
+ * by Newton's method in ln S. Parameters, in this order: OG and FG in points,
+ * ln k, ln m, ln Kr, logit δ.
+ */
+export const KINETIC_PARAMETERS = 6;
+
+const softplus = (z: number): number => (z > 30 ? z : Math.log1p(Math.exp(z)));
+const logistic = (z: number): number => 1 / (1 + Math.exp(-z));
+
+export class KineticCurve {
+  readonly og: number;
+  readonly fg: number;
+  readonly k: number;
+  readonly m: number;
+  readonly kr: number;
+  readonly delta: number;
+  private readonly w: number;
+  private readonly base: number;
+  /** Last solution, ln S: the next τ is usually a little later. */
+  private x = 0;
+
+  constructor(parameters: ArrayLike<number>) {
+    this.og = parameters[0]!;
+    this.fg = parameters[1]!;
+    this.k = Math.exp(parameters[2]!);
+    this.m = Math.exp(parameters[3]!);
+    this.kr = Math.exp(parameters[4]!);
+    this.delta = logistic(parameters[5]!);
+    this.w = 0.18 * this.m + 0.02;
+    this.base = softplus(-this.m / this.w);
+  }
+
+  /** A(τ), days. */
+  private activity(tau: number): number {
+    return this.w * (softplus((tau - this.m) / this.w) - this.base);
+  }
+
+  /** ln S at τ. */
+  private solve(tau: number): number {
+    if (tau <= 0) return 0;
+    const { kr, delta } = this;
+    const d = 1 - delta;
+    const gone = this.k * this.activity(tau);
+    let x = this.x;
+    for (let i = 0; i < 60; i += 1) {
+      const s = Math.exp(x);
+      const e = d + delta * s;
+      const l = Math.log1p(-delta * (1 - s));
+      const f = (kr / d) * (x - l) + l / delta + gone;
+      const step = f / ((kr + s) / e);
+      const next = x - Math.max(-3, Math.min(3, step));
+      x = next > 0 ? 0 : next;
+      if (Math.abs(step) < 1e-9 || x < -60) break;
+    }
+    this.x = Math.max(x, -60);
+    return this.x;
+  }
+
+  /** Share of the fall still to come at τ, 1 to 0. */
+  share(tau: number): number {
+    return Math.exp(this.solve(tau));
+  }
+
+  /** Gravity at τ, points. */
+  gravity(tau: number): number {
+    return this.fg + (this.og - this.fg) * this.share(tau);
+  }
+
+  /** Fall at τ, points a day of thermal time (positive). */
+  rate(tau: number): number {
+    const s = this.share(tau);
+    const a = logistic((tau - this.m) / this.w);
+    return ((this.og - this.fg) * this.k * a * s * (1 - this.delta * (1 - s))) / (this.kr + s);
+  }
+
+  /** τ at which the share still to come has fallen to `s`; Infinity for 0. */
+  tauOfShare(s: number): number {
+    if (s >= 1) return 0;
+    if (s <= 0) return Number.POSITIVE_INFINITY;
+    const d = 1 - this.delta;
+    const l = Math.log1p(-this.delta * (1 - s));
+    const gone = -((this.kr / d) * (Math.log(s) - l) + l / this.delta);
+    const y = gone / this.k / this.w + this.base;
+    // Inverse of softplus: ln(e^y − 1).
+    const z = y > 30 ? y : Math.log(Math.expm1(y));
+    return this.m + this.w * z;
+  }
+
+  /** Gravity at τ; its derivatives by the six parameters go to out[at], out[at + stride], … */
+  gradient(tau: number, out: Float64Array, at: number, stride: number): number {
+    const x = this.solve(tau);
+    const s = Math.exp(x);
+    const { kr, delta, k, m, w } = this;
+    const drop = this.og - this.fg;
+    out[at] = s;
+    out[at + stride] = 1 - s;
+    if (tau <= 0) {
+      for (let j = 2; j < 6; j += 1) out[at + j * stride] = 0;
+      return this.og;
+    }
+    const d = 1 - delta;
+    const e = d + delta * s;
+    const l = Math.log1p(-delta * (1 - s));
+    const z = (tau - m) / w;
+    const z0 = -m / w;
+    const rise = softplus(z) - this.base;
+    const byM = 0.18 * rise - logistic(z) * (1 + 0.18 * z) + logistic(z0) * (1 + 0.18 * z0);
+    const byX = (kr + s) / e;
+    const f = -(drop * s) / byX;
+    const lByDelta = -(1 - s) / e;
+    const byDelta = (kr / (d * d)) * (x - l) - (kr / d) * lByDelta + lByDelta / delta - l / (delta * delta);
+    out[at + 2 * stride] = f * k * w * rise;
+    out[at + 3 * stride] = f * k * m * byM;
+    out[at + 4 * stride] = f * (kr / d) * (x - l);
+    out[at + 5 * stride] = f * byDelta * delta * d;
+    return this.fg + drop * s;
+  }
+}

@@ -1,0 +1,341 @@
+import type { BatchEvent, BatchSetup, Instant, Reading } from '../types';
+import { appendBin, binFrom, newBins, type Bins } from './bins';
+import { robustLine, type Line } from './line';
+import { median, medianInPlace } from './order';
+
+export const HOUR_MS = 3_600_000;
+const USUAL_C = 20;
+/** Rate of fermentation at a temperature against that at 20 °C: Q10 of 2.2, our own choice (Q10 2 is common practice). */
+const warmth = (celsius: number): number => 2.2 ** ((Math.min(34, Math.max(4, celsius)) - 20) / 10);
+
+/** A stretch of the batch that follows one curve: from the pitch, or from the last addition. */
+export interface Segment {
+  /** h since the pitch. */
+  from: number;
+  /** Gravity at its beginning if all alcohol were sugar still, points. */
+  effectiveOg: number;
+  ogSd: number;
+  /** Gravity at its beginning as it is, points. Null until it has been measured. */
+  level: number | null;
+  fruit: boolean;
+  restarted: boolean;
+}
+
+/** A correction that was made to the float's record, for the explanation. */
+export interface Correction {
+  atHour: number;
+  points: number;
+  why: 'racking' | 'moved' | 'sugar';
+}
+
+const scratch = new Float64Array(2048);
+const lineT = new Float64Array(2048);
+const lineG = new Float64Array(2048);
+
+/**
+ * The record of one batch as the rules see it: hourly bins with the steps taken
+ * out, frozen stretches masked, thermal age, and the float's offset against the
+ * hydrometer. It only ever grows; nothing in it looks past the hour it is asked for.
+ */
+export class Track {
+  readonly bins: Bins = newBins();
+  readonly corrections: Correction[] = [];
+  /** Thermal age of each bin, days at 20 °C. */
+  tau = new Float64Array(256);
+  /** Mean warmth factor of the last day, for forecasts. */
+  private pendingShift = 0;
+  /** Offset of the float, points at OG, and share of it that scales with gravity. */
+  private offset = 0;
+  private gain = 0;
+  private variance: [number, number, number] = [0.8 ** 2 + 0.3, 0, 0.012 ** 2];
+  private calibrated = false;
+  /** Median spacing of the readings, h. */
+  spacing = 1;
+  private readings: Reading[] = [];
+  private taken = 0;
+
+  constructor(
+    readonly setup: BatchSetup,
+    readonly origin: Instant,
+  ) {}
+
+  hourOf(at: Instant): number {
+    return (at - this.origin) / HOUR_MS;
+  }
+
+  instantOf(hour: number): Instant {
+    return this.origin + Math.round(hour * HOUR_MS);
+  }
+
+  /** Takes in all readings measured before `until`; they must be in order of time and later than those before. */
+  extend(readings: Reading[], until: Instant): void {
+    this.readings = readings;
+    while (this.taken < readings.length && readings[this.taken]!.at < until) {
+      const from = this.taken;
+      const hour = Math.floor(this.hourOf(readings[from]!.at));
+      let to = from + 1;
+      while (to < readings.length && readings[to]!.at < until && Math.floor(this.hourOf(readings[to]!.at)) === hour) to += 1;
+      const previous = from > 0 ? readings[from - 1]! : null;
+      const { bins } = this;
+      appendBin(bins, readings, from, to, hour, this.origin, previous);
+      const i = bins.n - 1;
+      bins.g[i] = bins.raw[i]! - this.pendingShift;
+      this.age(i);
+      this.taken = to;
+    }
+    this.measureSpacing();
+  }
+
+  /** Takes the newest bin out again, so that an unfinished hour can be completed later. */
+  dropUnfinished(): void {
+    const { bins } = this;
+    if (bins.n === 0) return;
+    bins.n -= 1;
+    this.taken -= bins.count[bins.n]!;
+  }
+
+  private age(i: number): void {
+    const { bins } = this;
+    if (this.tau.length <= i) {
+      const longer = new Float64Array(2 * this.tau.length);
+      longer.set(this.tau);
+      this.tau = longer;
+    }
+    if (!(bins.temperature[i]! > -99)) bins.temperature[i] = i > 0 ? bins.temperature[i - 1]! : this.usualC();
+    const w = warmth(bins.temperature[i]!);
+    if (i === 0) this.tau[0] = (bins.t[0]! / 24) * w;
+    else this.tau[i] = this.tau[i - 1]! + ((bins.t[i]! - bins.t[i - 1]!) / 24) * 0.5 * (w + warmth(bins.temperature[i - 1]!));
+  }
+
+  private usualC(): number {
+    const range = this.setup.temperature;
+    return range ? (range.minC + range.maxC) / 2 : USUAL_C;
+  }
+
+  /** Spacing of the last 60 readings; it decides how long a silence is long. */
+  private measureSpacing(): void {
+    const n = this.taken;
+    if (n < 3) return;
+    const from = Math.max(1, n - 60);
+    for (let i = from; i < n; i += 1) scratch[i - from] = (this.readings[i]!.at - this.readings[i - 1]!.at) / HOUR_MS;
+    this.spacing = medianInPlace(scratch, 0, n - from);
+  }
+
+  /** Number of bins that begin before `hour`. */
+  upTo(hour: number): number {
+    return binFrom(this.bins, Math.ceil(hour - 1e-9));
+  }
+
+  lastReading(hour: number): Reading | null {
+    for (let i = this.taken - 1; i >= 0; i -= 1) if (this.hourOf(this.readings[i]!.at) <= hour) return this.readings[i]!;
+    return null;
+  }
+
+  /** Robust line over [from, to) h, frozen stretches left out. Null when less than `cover` of it has data. */
+  line(from: number, to: number, cover = 0.6): Line | null {
+    const { bins } = this;
+    const a = binFrom(bins, Math.ceil(from - 1e-9));
+    const b = this.upTo(to);
+    if (b - a < 5) return null;
+    let kept = 0;
+    let covered = 0;
+    const reach = Math.max(1.01, 1.6 * this.spacing);
+    for (let i = a; i < b && kept < lineT.length; i += 1) {
+      if (bins.masked[i]) continue;
+      lineT[kept] = bins.t[i]!;
+      lineG[kept] = bins.g[i]!;
+      covered += kept === 0 ? Math.min(1, reach) : Math.min(lineT[kept]! - lineT[kept - 1]!, reach);
+      kept += 1;
+    }
+    if (kept < 5 || covered < cover * (to - from)) return null;
+    return robustLine(lineT, lineG, 0, kept);
+  }
+
+  /** Median gravity of [from, to), points, steps out and frozen stretches left out; null with no data. */
+  level(from: number, to: number): number | null {
+    const { bins } = this;
+    const a = binFrom(bins, Math.ceil(from - 1e-9));
+    const b = this.upTo(to);
+    let n = 0;
+    for (let i = a; i < b && n < scratch.length; i += 1) {
+      if (bins.masked[i]) continue;
+      scratch[n] = bins.g[i]!;
+      n += 1;
+    }
+    return n === 0 ? null : medianInPlace(scratch, 0, n);
+  }
+
+  /** Median temperature of [from, to), °C; null with none. */
+  temperature(from: number, to: number): number | null {
+    const { bins } = this;
+    const a = binFrom(bins, Math.ceil(from - 1e-9));
+    const b = this.upTo(to);
+    let n = 0;
+    for (let i = a; i < b && n < scratch.length; i += 1) {
+      scratch[n] = bins.temperature[i]!;
+      n += 1;
+    }
+    return n === 0 ? null : medianInPlace(scratch, 0, n);
+  }
+
+  /** Thermal age at an hour between or after the bins, days. */
+  tauAt(hour: number): number {
+    const { bins } = this;
+    const i = this.upTo(hour) - 1;
+    if (i < 0) return (hour / 24) * warmth(bins.n > 0 ? bins.temperature[0]! : this.usualC());
+    return this.tau[i]! + ((hour - bins.t[i]!) / 24) * warmth(bins.temperature[i]!);
+  }
+
+  /** Thermal days in a day as warm as the last day before `hour`. */
+  warmthAt(hour: number): number {
+    const temperature = this.temperature(hour - 24, hour);
+    return warmth(temperature ?? this.usualC());
+  }
+
+  // Offset against the hydrometer.
+
+  /** A float level in points, as the hydrometer would show it. */
+  calibrate(points: number): number {
+    return points - this.offset - this.gain * points;
+  }
+
+  get isCalibrated(): boolean {
+    return this.calibrated;
+  }
+
+  /** Standard deviation of the calibrated level, points. */
+  calibrationSd(points: number): number {
+    const [a, b, c] = this.variance;
+    return Math.sqrt(Math.max(0, a + 2 * points * b + points * points * c));
+  }
+
+  /**
+   * Hydrometer reading beside a float level: a linear Gaussian update of offset
+   * and gain. Returns how far apart the two were before it.
+   */
+  pin(floatPoints: number, hydrometerPoints: number, sd: number): number {
+    const miss = floatPoints - hydrometerPoints - this.offset - this.gain * floatPoints;
+    const [a, b, c] = this.variance;
+    const pa = a + b * floatPoints;
+    const pb = b + c * floatPoints;
+    const s = pa + pb * floatPoints + sd * sd;
+    this.offset += (pa / s) * miss;
+    this.gain += (pb / s) * miss;
+    this.variance = [a - (pa * pa) / s, b - (pa * pb) / s, c - (pb * pb) / s];
+    this.calibrated = true;
+    return miss;
+  }
+
+  /** Lets the offset have drifted since the last pin. */
+  loosen(days: number): void {
+    const [a, b, c] = this.variance;
+    this.variance = [a + (0.04 * days) ** 2 + 0.3, b, c];
+  }
+
+  // Steps.
+
+  /** Takes a step out of everything from `hour` on. */
+  shift(hour: number, points: number, why: Correction['why']): void {
+    const { bins } = this;
+    for (let i = binFrom(bins, Math.ceil(hour - 1e-9)); i < bins.n; i += 1) bins.g[i] = bins.g[i]! - points;
+    this.pendingShift += points;
+    this.corrections.push({ atHour: hour, points, why });
+  }
+
+  /** Step at a known hour: the level 1 to 7.5 h after against the line of the 14 h before; null when there is too little. */
+  stepAt(hour: number): number | null {
+    const before = this.line(hour - 14, hour, 0.4);
+    const after = this.level(hour + 1, hour + 7.5);
+    if (!before || after === null) return null;
+    const at = before.level + (before.slope / 24) * Math.min(hour + 4.25 - before.middle, 16);
+    return after - at;
+  }
+
+  /**
+   * Looks for an unlogged step between `hour` - 19 and `hour` - 16: robust lines
+   * of the 16 h before and the 16 h after must part by more than 2.2 points, four
+   * standard errors and three tenths of the change of slope.
+   */
+  findStep(hour: number, notBefore: number): { hour: number; points: number } | null {
+    const { bins } = this;
+    const first = binFrom(bins, hour - 19);
+    const last = binFrom(bins, hour - 16);
+    let best = -1;
+    let widest = 1.5;
+    for (let i = Math.max(first, 3); i < last && i + 2 < bins.n; i += 1) {
+      if (bins.hour[i]! < notBefore + 12) continue;
+      if (bins.masked[i] || bins.masked[i - 1] || bins.t[i]! - bins.t[i - 1]! > Math.max(3, 2.5 * this.spacing)) continue;
+      const before = middleOf(bins.g[i - 3]!, bins.g[i - 2]!, bins.g[i - 1]!);
+      const after = middleOf(bins.g[i]!, bins.g[i + 1]!, bins.g[i + 2]!);
+      const change = Math.abs(after - before);
+      if (change > widest) {
+        widest = change;
+        best = i;
+      }
+    }
+    if (best < 0) return null;
+    const at = bins.hour[best]!;
+    const before = this.line(at - 16, at, 0.6);
+    const after = this.line(at, at + 16, 0.6);
+    if (!before || !after) return null;
+    const edge = (bins.t[best]! + bins.t[best - 1]!) / 2;
+    const levelBefore = before.level + (before.slope / 24) * (edge - before.middle);
+    const levelAfter = after.level + (after.slope / 24) * (edge - after.middle);
+    const points = levelAfter - levelBefore;
+    const se = Math.hypot(before.se, after.se) / 3;
+    const limit = Math.max(2.2, 4 * se, 0.3 * Math.abs(after.slope - before.slope));
+    return Math.abs(points) > limit ? { hour: at, points } : null;
+  }
+
+  // Frozen float.
+
+  /** Noise index at an hour: trimmed mean of the reading-to-reading change, as a standard deviation in points; null with too little data. */
+  noiseIndex(hour: number): number | null {
+    const { bins } = this;
+    const span = this.spacing < 0.75 ? 8 : this.spacing < 1.5 ? 14 : 24;
+    const to = this.upTo(hour);
+    let n = 0;
+    for (let i = to - 1; i >= 0 && bins.hour[i]! >= hour - span; i -= 1) {
+      const value = bins.flicker[i]!;
+      if (value === value) {
+        scratch[n] = value;
+        n += 1;
+      }
+    }
+    if (n < 6) return null;
+    const values = scratch.slice(0, n).sort();
+    const kept = Math.max(1, Math.floor(0.85 * n));
+    let sum = 0;
+    for (let i = 0; i < kept; i += 1) sum += values[i]!;
+    return sum / kept / (0.6057 * Math.SQRT2);
+  }
+
+  /** Smallest change that the float can show, points: a coarse float looks frozen when it is only coarse. */
+  resolution(): number {
+    let least = Number.POSITIVE_INFINITY;
+    const n = Math.min(this.taken, 400);
+    for (let i = 1; i < n; i += 1) {
+      const change = Math.abs(this.readings[i]!.gravity - this.readings[i - 1]!.gravity) * 1000;
+      if (change > 1e-6 && change < least) least = change;
+    }
+    return Number.isFinite(least) ? least : 0;
+  }
+
+  mask(fromHour: number, toHour: number): void {
+    const { bins } = this;
+    for (let i = binFrom(bins, Math.ceil(fromHour)); i < bins.n && bins.hour[i]! < toHour; i += 1) bins.masked[i] = 1;
+  }
+}
+
+function middleOf(a: number, b: number, c: number): number {
+  return Math.max(Math.min(a, b), Math.min(Math.max(a, b), c));
+}
+
+/** Hydrometer readings among the events: readings, and notes that carry a gravity. */
+export function handReadings(events: readonly BatchEvent[]): { at: Instant; gravity: number }[] {
+  return events.flatMap((event) =>
+    (event.kind === 'reading' || event.kind === 'note') && event.gravity ? [{ at: event.at, gravity: event.gravity }] : [],
+  );
+}
+
+export { median };

@@ -1,0 +1,577 @@
+import type { BatchEvent, BatchSetup, Instant, Neck, Reading } from '../types';
+import type { CurveFit } from '../fit/map';
+import { finalGravityPrior, type Normal } from '../fit/priors';
+import { gasLPerH, swapGasLPerH } from '../gas/gas';
+import { POINTS_PER_G_PER_L } from '../gravity/extract';
+import type { Line } from '../series/line';
+import { median } from '../series/order';
+import { Track, type Segment } from '../series/track';
+import { pointsOf } from '../units/convert';
+import { fitSegment } from './curve';
+import { hold, latch, type Latch } from './latch';
+
+/** Hours between two looks. The grid is anchored at the pitch, so that shifting all times shifts all answers. */
+export const LOOK_H = 3;
+/** Share of fruit that is sugar where nobody says. Common practice. */
+const FRUIT_SUGAR = 0.1;
+
+export const OVERDUE_H: Record<BatchSetup['kind'], number> = { beer: 48, cider: 72, mead: 72, wine: 72 };
+
+export interface FrozenState {
+  since: number;
+  index: number;
+  usual: number;
+}
+
+/** What the rules remember of one batch, and the rules themselves. One look every three hours. */
+export class Watch {
+  readonly track: Track;
+  segment: Segment;
+  /** Original gravity as told, or as the float showed it before anything happened, points. */
+  og: number | null;
+  ogSd: number;
+  ogTold: boolean;
+
+  /** Hour of the last look. */
+  lookedAt = 0;
+  neck: Neck | null;
+  neckSince: number | null = null;
+  stabilised = false;
+  lastAddition: number | null = null;
+  lastAdditionFruit = false;
+  lastHand: { hour: number; points: number; miss: number } | null = null;
+
+  readonly started = latch();
+  readonly overdue = latch();
+  readonly peaked = latch();
+  readonly airlock = latch();
+  readonly sluggish = latch();
+  readonly stuck = latch();
+  readonly terminal = latch();
+  readonly rack = latch();
+  readonly bottle = latch();
+  readonly refermenting = latch();
+  readonly rising = latch();
+  readonly drifting = latch();
+  stuckCold = false;
+  frozen: FrozenState | null = null;
+
+  /** Highest 12 h rate so far in this segment, points a day, and its standard error. */
+  maxRate = 0;
+  maxRateSe = 0;
+  maxFittedRate = 0;
+  baseline: number | null = null;
+  /** Level on which the batch came to rest, points. */
+  plateau: number | null = null;
+  private noise = 0.5;
+  private noiseHistory: number[] = [];
+  private frozenLooks = 0;
+  private events: BatchEvent[];
+  private eventsTaken = 0;
+  private pendingRackings: number[] = [];
+  private pendingLevels = false;
+  private lines = new Map<number, Line | null>();
+  private fitCache: { key: number; fit: CurveFit | null } | null = null;
+  private lastFit: CurveFit | null = null;
+
+  constructor(
+    readonly setup: BatchSetup,
+    origin: Instant,
+    events: readonly BatchEvent[],
+  ) {
+    this.track = new Track(setup, origin);
+    this.events = [...events].sort((a, b) => a.at - b.at || a.kind.localeCompare(b.kind));
+    this.og = setup.originalGravity === null ? null : pointsOf(setup.originalGravity);
+    this.ogTold = this.og !== null;
+    this.ogSd = this.ogTold ? 1 : 3;
+    this.neck = setup.neck ?? null;
+    this.segment = { from: 0, effectiveOg: this.og ?? 0, ogSd: this.ogSd, level: this.og, fruit: false, restarted: false };
+  }
+
+  /** Events that have become known; those behind the last look need a new watch. */
+  hear(events: readonly BatchEvent[]): void {
+    this.events = [...events].sort((a, b) => a.at - b.at || a.kind.localeCompare(b.kind));
+  }
+
+  /** Hour since which the temperature has been out of its range without a break. */
+  outsideSince(side: 'low' | 'high'): number | null {
+    const range = this.setup.temperature;
+    if (!range) return null;
+    const { bins } = this.track;
+    let since: number | null = null;
+    for (let i = this.track.upTo(this.lookedAt) - 1; i >= 0; i -= 1) {
+      const t = bins.temperature[i]!;
+      if (side === 'low' ? t >= range.minC : t <= range.maxC) break;
+      since = bins.t[i]!;
+    }
+    return since;
+  }
+
+  // Figures of the present look. Each is worked out at most once a look.
+
+  line(window: number): Line | null {
+    if (this.lines.has(window)) return this.lines.get(window)!;
+    const from = Math.max(this.lookedAt - window, this.segment.restarted ? this.segment.from + 1 : -48);
+    const line = this.lookedAt - from < 0.6 * window ? null : this.track.line(from, this.lookedAt);
+    this.lines.set(window, line);
+    return line;
+  }
+
+  /** Calibrated level now, points: the day's line at its end where the day is quiet, else the last six hours. */
+  levelNow(): number | null {
+    const line = this.line(24);
+    if (line && Math.abs(line.slope) < 6) return this.track.calibrate(line.level + (line.slope / 24) * (this.lookedAt - line.middle));
+    const raw = this.track.level(this.lookedAt - 6, this.lookedAt);
+    return raw === null ? null : this.track.calibrate(raw);
+  }
+
+  fgPrior(): Normal {
+    const { segment } = this;
+    return finalGravityPrior(this.setup, segment.effectiveOg, segment.ogSd, segment.fruit);
+  }
+
+  /** Highest gravity at which the batch may be done, points. */
+  zoneTop(): number {
+    const prior = this.fgPrior();
+    return prior.mean + Math.max(1.28 * prior.sd, 2);
+  }
+
+  /** The fitted curve; anew every 6 h to day 10, every 12 h to day 30, then once a day. */
+  fit(fresh = false): CurveFit | null {
+    const step = this.lookedAt < 240 ? 6 : this.lookedAt < 720 ? 12 : 24;
+    const at = fresh ? this.lookedAt : Math.floor(this.lookedAt / step + 1e-9) * step;
+    if (this.fitCache && this.fitCache.key === at) return this.fitCache.fit;
+    const { segment } = this;
+    if (segment.effectiveOg < 5) return null;
+    const og: Normal = { mean: segment.level ?? segment.effectiveOg, sd: segment.restarted ? 2 : this.ogSd };
+    const fit = fitSegment(this.setup, this.track, segment, at, this.fgPrior(), og, this.lastFit?.parameters);
+    this.fitCache = { key: at, fit };
+    this.lastFit = fit;
+    return fit;
+  }
+
+  /** Expected final gravity, points: from the curve, never above the present level by more than 1.5. */
+  expectedFg(): number | null {
+    const fit = this.fit();
+    return fit ? fit.parameters[1]! : null;
+  }
+
+  remaining(): number | null {
+    const level = this.levelNow();
+    const fg = this.expectedFg();
+    return level === null || fg === null ? null : level - fg;
+  }
+
+  /** Stable over the smallest window of 48, 72, 120, 168 h that is at least `needed`. */
+  stableOver(needed: number, slopeLimit: number, upperLimit: number): { window: number; line: Line } | null {
+    const window = [48, 72, 120, 168].find((w) => w >= needed - 1e-9) ?? 168;
+    const from = this.lookedAt - window;
+    const line = from < this.segment.from ? null : this.track.line(from, this.lookedAt, 0.75);
+    if (!line) return null;
+    if (Math.abs(line.slope) >= slopeLimit / window) return null;
+    if (-line.slope + 1.64 * line.se >= upperLimit / window) return null;
+    return { window, line };
+  }
+
+  get age(): number {
+    return this.lookedAt;
+  }
+
+  quietSinceAddition(hours: number, fruitHours: number): boolean {
+    if (this.lastAddition === null) return true;
+    return this.lookedAt - this.lastAddition > (this.lastAdditionFruit ? fruitHours : hours);
+  }
+
+  // One look.
+
+  /** Takes in what was measured before `hour` and applies every rule once. */
+  look(hour: number, readings: Reading[]): void {
+    this.advance(hour, readings);
+    this.watchSteps();
+    this.watchFloat();
+    if (this.og === null) this.guessOg();
+    this.judge();
+  }
+
+  /** Moves to an hour without applying the rules: for the figures between two looks. */
+  advance(hour: number, readings: Reading[]): void {
+    this.lookedAt = hour;
+    this.lines.clear();
+    this.track.extend(readings, this.track.instantOf(hour));
+    while (this.eventsTaken < this.events.length && this.track.hourOf(this.events[this.eventsTaken]!.at) <= hour) {
+      this.take(this.events[this.eventsTaken]!);
+      this.eventsTaken += 1;
+    }
+  }
+
+  private take(event: BatchEvent): void {
+    const hour = this.track.hourOf(event.at);
+    switch (event.kind) {
+      case 'rack':
+        this.pendingRackings.push(hour);
+        break;
+      case 'neck':
+        this.neck = event.neck ?? this.neck;
+        this.neckSince = hour;
+        break;
+      case 'stabilise':
+        this.stabilised = true;
+        break;
+      case 'addition':
+      case 'top_up':
+        this.add(event, hour);
+        break;
+      case 'reading':
+      case 'note':
+        if (event.gravity) this.pinTo(hour, pointsOf(event.gravity));
+        break;
+    }
+  }
+
+  private pinTo(hour: number, points: number): void {
+    const raw = this.track.level(hour - 4, hour + 2) ?? this.track.level(hour - 12, hour + 1);
+    if (raw === null) {
+      this.lastHand = { hour, points, miss: 0 };
+      return;
+    }
+    if (this.lastHand) this.track.loosen((hour - this.lastHand.hour) / 24);
+    else if (hour > 24) this.track.loosen(hour / 24);
+    const line = this.track.line(hour - 12, hour + 1);
+    const slack = 0.7 + (line ? Math.abs(line.slope) * 0.08 : 0.3);
+    const miss = this.track.pin(raw, points, slack);
+    this.lastHand = { hour, points, miss };
+    this.fitCache = null;
+  }
+
+  private add(event: BatchEvent, hour: number): void {
+    const volume = this.setup.volumeL;
+    let effective = this.segment.effectiveOg || (this.og ?? 0);
+    let level = this.track.level(hour - 6, hour);
+    level = level === null ? null : this.track.calibrate(level);
+    if (event.sugarG) {
+      const points = (POINTS_PER_G_PER_L * event.sugarG) / volume;
+      effective += points;
+      if (level !== null) level += points;
+    }
+    if (event.fruitG) effective += (POINTS_PER_G_PER_L * event.fruitG * FRUIT_SUGAR) / volume;
+    if (event.volumeL) {
+      const share = event.volumeL / (volume + event.volumeL);
+      const other = event.gravity ? pointsOf(event.gravity) : 0;
+      effective += share * (other - effective);
+      if (level !== null) level += share * (other - level);
+    }
+    this.restart(hour, effective, level, Boolean(event.fruitG));
+  }
+
+  private restart(hour: number, effectiveOg: number, level: number | null, fruit: boolean): void {
+    const sweetened = this.terminal.on || this.bottle.on;
+    this.lastAddition = hour;
+    this.lastAdditionFruit = fruit;
+    this.segment = { from: hour, effectiveOg, ogSd: Math.hypot(this.segment.ogSd, 1), level, fruit: fruit || this.segment.fruit, restarted: true };
+    this.plateau = sweetened ? level : null;
+    this.maxRate = 0;
+    this.maxRateSe = 0;
+    this.maxFittedRate = 0;
+    this.fitCache = null;
+    this.lastFit = null;
+    this.pendingLevels = true;
+    this.sweetened = sweetened;
+    for (const one of [this.peaked, this.airlock, this.sluggish, this.stuck, this.terminal, this.rack, this.bottle]) clear(one);
+  }
+
+  /** Sugar went in after the batch had come to rest. */
+  sweetened = false;
+
+  private guessOg(): void {
+    // Only a float that was there from the beginning can stand in for the hydrometer.
+    const { bins } = this.track;
+    if (bins.n < 3 || bins.t[0]! > 24) return;
+    const level = this.track.level(bins.t[0]! - 1, bins.t[0]! + 6);
+    if (level === null || this.lookedAt < bins.t[0]! + 3) return;
+    this.og = Math.max(level, this.og ?? level);
+    this.segment = { ...this.segment, effectiveOg: this.og, level: this.og, ogSd: 3 };
+  }
+
+  private watchSteps(): void {
+    const { track } = this;
+    this.pendingRackings = this.pendingRackings.filter((hour) => {
+      if (this.lookedAt < hour + 7.5) return true;
+      const step = track.stepAt(hour);
+      if (step !== null && Math.abs(step) > 0.4 && Math.abs(step) < 15) track.shift(hour, step, 'racking');
+      return false;
+    });
+    if (this.pendingLevels && this.lookedAt >= this.segment.from + 7) {
+      const level = track.level(this.segment.from + 1, this.segment.from + 7);
+      if (level !== null) this.segment = { ...this.segment, level: track.calibrate(level) };
+      this.pendingLevels = false;
+      if (this.sweetened) this.plateau = this.segment.level;
+    }
+    const quietFrom = Math.max(this.segment.from, this.frozen ? this.lookedAt : 0);
+    const step = track.findStep(this.lookedAt, quietFrom);
+    if (step && !this.nearEvent(step.hour)) {
+      if (step.points > 5.5) this.restart(step.hour, this.segment.effectiveOg + step.points, null, false);
+      else track.shift(step.hour, step.points, 'moved');
+      this.lines.clear();
+      this.fitCache = null;
+    }
+  }
+
+  private nearEvent(hour: number): boolean {
+    return this.events.some(
+      (event) => (event.kind === 'rack' || event.kind === 'addition' || event.kind === 'top_up') && Math.abs(this.track.hourOf(event.at) - hour) < 4,
+    );
+  }
+
+  private watchFloat(): void {
+    const index = this.track.noiseIndex(this.lookedAt);
+    if (index === null) return;
+    const usual = this.noiseHistory.length >= 6 ? median(this.noiseHistory) : null;
+    const limit = this.track.spacing < 0.75 ? 0.3 : 0.24;
+    if (this.frozen) {
+      if (index > 0.62 * this.frozen.usual) {
+        this.track.mask(this.frozen.since, this.lookedAt - 3);
+        this.frozen = null;
+        this.frozenLooks = 0;
+        this.lines.clear();
+      } else {
+        this.frozen = { ...this.frozen, index };
+        this.track.mask(this.frozen.since, this.lookedAt);
+        this.lines.clear();
+      }
+      return;
+    }
+    if (usual !== null && this.track.resolution() < 0.6 * usual && index < limit * usual) {
+      this.frozenLooks += 1;
+      if (this.frozenLooks >= 2 || index < 0.12 * usual) {
+        const span = this.track.spacing < 0.75 ? 8 : 14;
+        this.frozen = { since: this.lookedAt - span - (this.frozenLooks - 1) * LOOK_H, index, usual };
+        this.track.mask(this.frozen.since, this.lookedAt);
+        this.lines.clear();
+      }
+    } else {
+      this.frozenLooks = 0;
+      this.noiseHistory.push(index);
+      if (this.noiseHistory.length > 120) this.noiseHistory.shift();
+    }
+  }
+
+  /** Drop since the pitch, points; null before there is a baseline. */
+  dropSoFar(): number | null {
+    const now = this.track.level(this.lookedAt - 6, this.lookedAt);
+    return now === null || this.baseline === null ? null : this.baseline - now;
+  }
+
+  private judge(): void {
+    const hour = this.lookedAt;
+    this.judgeStart(hour);
+    if (this.started.on && !this.frozen) {
+      this.judgePeak(hour);
+      this.judgeAirlock(hour);
+      this.judgeEnd(hour);
+      this.judgeStall(hour);
+      this.judgeRefermentation(hour);
+    }
+    const day = this.line(48);
+    hold(this.rising, hour, day !== null && day.slope - 1.64 * day.se > 0.25, 2, day !== null && day.slope - 1.64 * day.se <= 0);
+    const settled = this.quietSinceAddition(48, 240);
+    hold(this.drifting, hour, this.rising.on && settled && !this.segment.fruit && hour > 96, 8, !this.rising.on);
+    if (this.lastHand && Math.abs(this.lastHand.miss) > 4 && hour - this.lastHand.hour < 168 && this.lastHand.hour > 12) {
+      hold(this.drifting, hour, true, 1, false);
+    }
+  }
+
+  private judgeStart(hour: number): void {
+    const { track } = this;
+    if (this.started.on) return;
+    const now = track.level(hour - 6, hour);
+    if (now === null) return;
+    const first = track.bins.n > 0 ? track.bins.t[0]! : hour;
+    if (this.baseline === null) {
+      if (hour < first + 5.5) return;
+      this.baseline = track.level(first - 1, first + 6) ?? now;
+      if (this.ogTold && this.og !== null && first < 12 && this.baseline > this.og - 5) {
+        track.pin(this.baseline, this.og, 0.7);
+      }
+    } else if (now > this.baseline) this.baseline = Math.min(now, this.baseline + 0.15);
+    const line = this.line(12);
+    if (line) this.noise = Math.max(0.25, Math.min(1.2, line.sigma));
+    const fall = this.baseline - now;
+    const limit = Math.max(1.4, 2.25 * this.noise);
+    // A float put in late, or silent at first, may find the fall well on its way.
+    const late = this.og !== null && this.ogTold && this.og - now > (first > 12 ? 5 : 8);
+    const falling = line !== null && line.slope + 0.8 * line.se < 0;
+    hold(this.started, hour, (fall > limit && falling) || late, 2, false);
+    hold(this.overdue, hour, hour >= OVERDUE_H[this.setup.kind] && fall < 2.5 && !this.started.on, 1, this.started.on);
+  }
+
+  private judgePeak(hour: number): void {
+    if (this.peaked.on) return;
+    const line = this.line(12);
+    if (!line) return;
+    const rate = -line.slope;
+    if (rate > this.maxRate && line.se < Math.max(1.5, 0.25 * rate)) {
+      this.maxRate = rate;
+      this.maxRateSe = line.se;
+    }
+    const below = rate < 0.87 * this.maxRate && this.maxRate - rate > 1.3 * Math.hypot(line.se, this.maxRateSe);
+    let fitted = false;
+    const fit = Math.floor(hour) % 12 === 0 ? this.fit() : null;
+    if (fit) {
+      const tau = this.track.tauAt(hour) - this.track.tauAt(this.segment.from);
+      const now = fit.curve.rate(tau) * this.track.warmthAt(hour);
+      this.maxFittedRate = Math.max(this.maxFittedRate * 0.98, now);
+      fitted = now < 0.8 * this.maxFittedRate && fit.curve.share(tau) < 0.78;
+    }
+    hold(this.peaked, hour, below || fitted, 2, false);
+  }
+
+  swapGas(): number {
+    return swapGasLPerH(this.setup.kind, this.setup.volumeL, this.setup.vesselL);
+  }
+
+  private judgeAirlock(hour: number): void {
+    const line = this.line(12) ?? this.line(24);
+    if (!line) return;
+    const limit = this.swapGas();
+    const upper = gasLPerH(-line.slope + 1.64 * line.se, this.setup.volumeL);
+    const lower = gasLPerH(-line.slope - 1.64 * line.se, this.setup.volumeL);
+    hold(this.airlock, hour, this.peaked.on && upper < limit, 4, lower > 1.3 * limit);
+  }
+
+  private judgeEnd(hour: number): void {
+    const level = this.levelNow();
+    const line48 = this.line(48);
+    const lower48 = line48 ? -line48.slope - 1.64 * line48.se : null;
+    const inside = level !== null && level <= this.zoneTop();
+    const settled = this.quietSinceAddition(60, 120);
+    const age = this.age;
+
+    let done = false;
+    if (inside && this.peaked.on && settled && level !== null) {
+      const short = Math.max(48, 0.15 * age);
+      if (this.stableOver(short, 24, short >= 72 ? 34 : 36)) {
+        const left = this.remaining();
+        done = left !== null && left < 1.8;
+      }
+      if (!done) done = this.stableOver(Math.max(72, 0.2 * age), 24, 34) !== null;
+    }
+    const wasDone = this.terminal.on;
+    hold(this.terminal, hour, done, 2, (lower48 !== null && lower48 > 0.8) || this.refermenting.on);
+    if (this.terminal.on && !wasDone) this.plateau = level;
+
+    const line24 = this.line(24);
+    let rackable = this.terminal.on;
+    if (!rackable && inside && settled && this.peaked.on && line24 && -line24.slope < 1.2 && -line24.slope + line24.se < 2) {
+      const left = this.remaining();
+      rackable = left !== null && left < 2.4;
+    }
+    hold(this.rack, hour, rackable, 3, line24 !== null && -line24.slope - 1.64 * line24.se > 1.5);
+
+    let still = false;
+    const needed = Math.max(72, 0.2 * age);
+    if (inside && this.peaked.on && !this.rising.on && this.quietSinceAddition(120, 240) && !this.refermenting.on) {
+      if (this.stableOver(Math.min(168, needed), 18, 27)) {
+        const left = this.remaining();
+        still = left !== null && left < 1.2;
+      }
+    }
+    hold(this.bottle, hour, still, 4, (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on);
+  }
+
+  private judgeStall(hour: number): void {
+    const level = this.levelNow();
+    if (level === null) return;
+    const prior = this.fgPrior();
+    const limit = prior.mean + Math.max(1.28 * prior.sd, 2) + 2;
+    const line48 = this.line(48);
+    const line72 = this.line(72);
+    const slow = (line: Line | null, rate: number, upper: number): boolean =>
+      line !== null && -line.slope < rate && -line.slope + 1.64 * line.se < upper;
+    const settled = this.quietSinceAddition(60, 120);
+    const flat = slow(line48, 0.5, 0.75) || slow(line72, 0.35, 0.5);
+    const line24 = this.line(24);
+    const moving = line24 !== null && -line24.slope - 1.64 * line24.se > 1;
+    hold(this.stuck, hour, level > limit && flat && settled, 4, moving || level < limit);
+    if (this.stuck.on) this.stuckCold = this.coldNow();
+
+    const rate = line48 ? -line48.slope : null;
+    let crawling = false;
+    if (this.peaked.on && hour > 48 && line48 && rate !== null && rate + line48.se < 2 && level > prior.mean + 9 && !this.stuck.on && settled) {
+      const end = this.hoursToEnd();
+      const fg = this.expectedFg();
+      crawling = (end !== null && end > 144) || (fg !== null && fg > this.zoneTop());
+    }
+    hold(this.sluggish, hour, crawling, 4, (rate !== null && rate > 2.6) || level < prior.mean + 6 || this.stuck.on);
+  }
+
+  coldNow(): boolean {
+    const now = this.track.temperature(this.lookedAt - 12, this.lookedAt);
+    if (now === null) return false;
+    if (this.setup.temperature && now < this.setup.temperature.minC - 0.4) return true;
+    const before = this.track.temperature(this.lookedAt - 96, this.lookedAt - 48);
+    return before !== null && before - now > 4;
+  }
+
+  private judgeRefermentation(hour: number): void {
+    if (this.plateau === null) return;
+    const level = this.levelNow();
+    if (level === null) return;
+    if (level > this.plateau && !this.sweetened) this.plateau = level;
+    const falls = [24, 48].some((window) => {
+      const line = this.line(window);
+      return line !== null && line.slope + 2 * line.se < -0.25;
+    });
+    const line48 = this.line(48);
+    const still = line48 !== null && -line48.slope + line48.se < 0.3 && Math.abs(line48.slope) < 0.15;
+    const wasOn = this.refermenting.on;
+    hold(this.refermenting, hour, level < this.plateau - 1.5 && falls && !this.stabilised, 3, still || this.stabilised);
+    if (wasOn && !this.refermenting.on) this.plateau = level;
+  }
+
+  /** Hours until the gravity is within a point of its end, from the curve; null without one. */
+  hoursToEnd(): number | null {
+    const fit = this.fit();
+    if (!fit) return null;
+    const { curve } = fit;
+    const drop = curve.og - curve.fg;
+    if (drop <= 1) return 0;
+    const tauEnd = curve.tauOfShare(1 / drop);
+    const tauNow = this.track.tauAt(this.lookedAt) - this.track.tauAt(this.segment.from);
+    return Math.max(0, ((tauEnd - tauNow) / this.track.warmthAt(this.lookedAt)) * 24);
+  }
+
+  /** Share of the whole expected fall that is done, 0 to 1. */
+  progress(): number {
+    const level = this.levelNow();
+    const fg = this.expectedFg() ?? this.fgPrior().mean;
+    const { effectiveOg } = this.segment;
+    if (level === null || effectiveOg - fg < 1) return 0;
+    return Math.min(1, Math.max(0, (effectiveOg - level) / (effectiveOg - fg)));
+  }
+
+  /** Present fall, points a day: the shortest window that is sharp enough, blended with the curve. */
+  rateNow(): { value: number; sd: number } | null {
+    let chosen: Line | null = null;
+    for (const window of [8, 12, 24, 48, 72]) {
+      const line = this.line(window);
+      if (!line) continue;
+      chosen = line;
+      if (line.se <= Math.max(0.5, 0.15 * Math.abs(line.slope))) break;
+    }
+    if (!chosen) return null;
+    const rate = -chosen.slope;
+    const fit = this.started.on && !this.stuck.on ? this.fit() : null;
+    if (!fit) return { value: rate, sd: chosen.se };
+    const tau = this.track.tauAt(this.lookedAt) - this.track.tauAt(this.segment.from);
+    const curved = fit.curve.rate(tau) * this.track.warmthAt(this.lookedAt);
+    const own = chosen.se ** 2 + (0.12 * rate) ** 2;
+    const other = (0.25 * curved + 0.3) ** 2;
+    return { value: (rate / own + curved / other) / (1 / own + 1 / other), sd: Math.sqrt(1 / (1 / own + 1 / other)) };
+  }
+}
+
+function clear(one: Latch): void {
+  one.on = false;
+  one.since = null;
+  one.run = 0;
+}
