@@ -28,8 +28,14 @@ export const up: Migration['up'] = async (run) => {
     )`);
   await run(`create index sign_ins_person on sign_ins (person_id) where ended_at is null`);
 
-  // Tries at signing in, by account and by address; rate-limiter-flexible's own layout.
-  await run(`create unlogged table rate_limits (key varchar(255) primary key, points integer not null default 0, expire bigint)`);
+  // Tries at signing in, by account and by address. Losing them in a crash gives a guesser nothing of worth.
+  await run(`
+    create unlogged table sign_in_tries (
+      key text primary key,
+      tries integer not null,
+      last_at timestamptz not null,
+      locked_until timestamptz not null
+    )`);
 
   await run(`
     create table cellars (
@@ -283,5 +289,5 @@ export const up: Migration['up'] = async (run) => {
 export const down: Migration['down'] = async (run) => {
   await run(`
     drop table if exists heartbeats, audit, system_states, outbox, alert_states, alerts, assessments, batch_states, refusals,
-      sensor_latest, readings, assignments, sensors, entries, batches, memberships, cellars, rate_limits, sign_ins, people cascade`);
+      sensor_latest, readings, assignments, sensors, entries, batches, memberships, cellars, sign_in_tries, sign_ins, people cascade`);
 };
