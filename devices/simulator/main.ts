@@ -28,6 +28,7 @@ function brokerUrl(): string {
 function run(plans: readonly Plan[], speed: number): void {
   const log = logFor('simulator');
   const url = brokerUrl();
+  const links: SensorLink[] = [];
   const floats = plans.map(({ entry, clockFrom, sendFrom }) => {
     const about = { sensor: entry.sensor, scenario: entry.scenario };
     const link = new SensorLink({
@@ -36,6 +37,7 @@ function run(plans: readonly Plan[], speed: number): void {
       secret: entry.secret,
       onState: (state, detail) => log[state === 'refused' ? 'warn' : 'debug']({ ...about, detail }, `link ${state}`),
     });
+    links.push(link);
     return new RunningFloat(entry, link, new FastClock(systemClock, clockFrom, speed), sendFrom);
   });
   log.info({ sensors: floats.length, speed }, 'simulated floats at work');
@@ -45,9 +47,9 @@ function run(plans: readonly Plan[], speed: number): void {
     if (stopping) return;
     stopping = true;
     clearInterval(timer);
-    await Promise.all(floats.map(({ link }) => link.close(PATIENCE_MS)));
-    const total = (count: (float: RunningFloat) => number) => floats.reduce((sum, float) => sum + count(float), 0);
-    log.info({ acknowledged: total(({ link }) => link.acknowledged), waiting: total(({ link }) => link.waiting) }, 'simulated floats stopped');
+    await Promise.all(links.map((link) => link.close(PATIENCE_MS)));
+    const total = (count: (link: SensorLink) => number) => links.reduce((sum, link) => sum + count(link), 0);
+    log.info({ acknowledged: total((link) => link.acknowledged), waiting: total((link) => link.waiting), overwritten: total((link) => link.overwritten) }, 'simulated floats stopped');
   };
   process.once('SIGINT', () => void stop());
   process.once('SIGTERM', () => void stop());

@@ -1,9 +1,15 @@
 import type { Clock } from '@/lib/clock';
+import type { TelemetryReading } from '@/lib/contracts/telemetry';
 import type { Instant } from '@/lib/core/types';
 import { byArrival, series, type SimulatedReading } from './generate';
 import { scenarioNamed } from './scenarios';
-import type { SensorLink } from './sensor-link';
 import type { SimulatedSensor } from './sensors-file';
+
+/** Where readings go: kept until acknowledged, sent when `pump` finds the way free. */
+export interface Outlet {
+  send(reading: TelemetryReading): void;
+  pump(): void;
+}
 
 /** One simulated float at work: hands over what is due by the clock. */
 export class RunningFloat {
@@ -11,8 +17,8 @@ export class RunningFloat {
   private next: SimulatedReading | undefined;
 
   constructor(
-    readonly entry: SimulatedSensor,
-    readonly link: SensorLink,
+    entry: SimulatedSensor,
+    private readonly link: Outlet,
     private readonly clock: Clock,
     /** Readings that arrived before this are left out. */
     from: Instant,
