@@ -1,0 +1,44 @@
+import uPlot from 'uplot';
+import { cutAt, knownUntil, type GravityPoint, type Picture } from './picture';
+
+/** Place of each series in uPlot's columns; 0 is time. */
+export const SERIES = { bandHigh: 1, bandLow: 2, fit: 3, forecast: 4, expectedHigh: 5, expectedLow: 6, expected: 7, readings: 8, temperature: 9, gas: 10 } as const;
+
+type Table = [number[], ...(number | null)[][]];
+
+/** uPlot wants times strictly ascending; a time that comes twice keeps its last values. */
+export function ascending(table: Table): Table {
+  const [at, ...columns] = table;
+  const order = at.map((_, index) => index).sort((a, b) => at[a]! - at[b]! || a - b);
+  const keep = order.filter((index, place) => at[index] !== at[order[place + 1] ?? -1]);
+  return [keep.map((index) => at[index]!), ...columns.map((column) => keep.map((index) => column[index] ?? null))];
+}
+
+const table = (points: readonly GravityPoint[], ...pick: ((point: GravityPoint) => number)[]): Table => [points.map((point) => point.at), ...pick.map((value) => points.map(value))];
+
+/** A line through the readings stands in where nothing could be fitted yet. */
+function readingsAsCurve(picture: Picture): GravityPoint[] {
+  return picture.readings.at.flatMap((at, index) => {
+    const gravity = picture.readings.gravity[index];
+    return typeof gravity === 'number' && at <= picture.now ? [{ at, gravity, lo: gravity, hi: gravity }] : [];
+  });
+}
+
+/** All that is drawn as lines, bands, dots and bars, joined on one ascending time column. */
+export function columnsOf(picture: Picture): uPlot.AlignedData {
+  const strayed = picture.expected.length > 1;
+  const fitted = picture.curve.length > 1;
+  const { past, coming } = cutAt(fitted ? picture.curve : readingsAsCurve(picture), knownUntil(picture));
+  // Where the batch left its curve, the band belongs to what it should have done.
+  const ahead = strayed ? [] : coming;
+  const banded = fitted ? [...past, ...ahead.slice(1)] : [];
+  const tables: Table[] = [
+    ascending(table(banded, (point) => point.hi, (point) => point.lo)),
+    ascending(table(past, (point) => point.gravity)),
+    ascending(table(ahead, (point) => point.gravity)),
+    ascending(table(strayed ? picture.expected : [], (point) => point.hi, (point) => point.lo, (point) => point.gravity)),
+    ascending([[...picture.readings.at], [...picture.readings.gravity], [...picture.readings.temperature]]),
+    ascending([picture.gas.map((bin) => bin.at), picture.gas.map((bin) => bin.value)]),
+  ];
+  return uPlot.join(tables as uPlot.AlignedData[]);
+}

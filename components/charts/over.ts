@@ -1,0 +1,275 @@
+import { placePosts, keepClear, type Label } from './place';
+import { gravityNow, knownUntil, valueAt, type Picture } from './picture';
+import { clock } from './zone';
+import { underText } from './ground';
+import { clipToPlot, crisp, line, setText, type Mark, type View } from './view';
+
+/** Marks over the curves: posts, rings, brackets, the likely end and the now-line. */
+
+const isPage = (view: View) => view.layout.style !== 'lane';
+const inside = (view: View, x: number, slack = 0) => x >= view.left - slack && x <= view.right + slack;
+
+function ring({ context, palette }: View, x: number, y: number, radius: number, crossed: boolean): void {
+  context.strokeStyle = palette.ink;
+  context.fillStyle = palette.lit;
+  context.lineWidth = crossed ? 1.7 : 1.4;
+  context.beginPath();
+  context.arc(x, y, radius, 0, Math.PI * 2);
+  context.fill();
+  context.stroke();
+  if (crossed) {
+    context.lineWidth = 1.3;
+    line(context, [[x - radius - 4, y], [x + radius + 4, y]]);
+  }
+}
+
+/** Hydrometer readings, with their figures where there is room. */
+export const rings: Mark = (view) => {
+  const { context, palette, layout, picture } = view;
+  const page = isPage(view);
+  const shown = picture.rings.map((item) => ({ ...item, x: view.x(item.at), y: view.y(layout.gravity, item.gravity) })).filter((item) => inside(view, item.x, 4));
+  for (const item of shown) ring(view, item.x, item.y, page ? 5 : 3.6, page);
+  if (layout.style === 'lane' && layout.height < 60) return;
+  setText(view, palette.ink, page ? 600 : 500, page ? 1 : 0.96);
+  context.textAlign = 'left';
+  const labels = shown.map((item): Label => {
+    const width = context.measureText('1.000').width;
+    const first = page || item !== shown[0] || picture.bed === null;
+    // Over the ring in a lane, over and right of it on a page; at the right of a ring that touches the top.
+    const above = item.y - view.top > 22;
+    const x = page ? item.x + (above && first ? 6 : 10) : above ? item.x - width / 2 : item.x + 7;
+    return { x: Math.max(view.left, Math.min(x, view.right - width)), y: above ? item.y - 20 : item.y + 5, width, height: 13 };
+  });
+  const nowX = view.x(picture.now);
+  const taken: Label[] = [{ x: nowX - 6, y: view.top, width: page ? 90 : 8, height: 18 }];
+  if (picture.bracket && page) taken.push({ x: view.x(picture.bracket.from), y: view.y(layout.gravity, picture.bracket.gravity) - 40, width: 90, height: 20 });
+  for (const index of keepClear(labels, taken)) {
+    const label = labels[index]!;
+    context.fillText(shown[index]!.gravity.toFixed(3), label.x, label.y + 7);
+  }
+};
+
+/** On a page the letters stand under the bed, with their words; in a lane on the bed, or hanging where it lies flat. */
+export const posts: Mark = (view) => {
+  const { context, palette, layout, picture, top, bottom } = view;
+  const page = isPage(view);
+  const size = layout.style === 'lane' ? 15 : 17;
+  setText(view, palette.ink, 600, 0.96);
+  context.textAlign = 'left';
+  const shown = picture.posts
+    .map((post) => ({ ...post, x: view.x(post.at), box: Math.max(size, context.measureText(post.letters).width + 8), wordWidth: context.measureText(post.word).width + 6 }))
+    .filter((post) => inside(view, post.x, 2));
+  const placed = placePosts(shown.map((post) => ({ x: post.x, box: post.box, word: post.wordWidth })), view.right);
+  const bedY = view.y(layout.gravity, picture.bed?.value ?? layout.gravity.min);
+  for (const place of placed) {
+    const post = shown[place.index]!;
+    const curveY = surface(view, post.at);
+    const hangs = !page && bedY - curveY < 18;
+    const y = page ? bedY + 13 : hangs ? top + 1 : bedY - size;
+    const x = crisp(post.x);
+    context.strokeStyle = post.toCome ? palette.ink : palette.ink2;
+    context.lineWidth = 1;
+    context.setLineDash(post.toCome ? [2, 2] : []);
+    if (page) line(context, [[x, Math.min(curveY, y)], [x, bottom]]);
+    else line(context, hangs ? [[x, y], [x, Math.max(curveY, y)]] : [[x, curveY], [x, bedY]]);
+    if (post.toCome) {
+      context.fillStyle = palette.lit;
+      context.fillRect(place.left, y, post.box, size);
+      context.strokeRect(place.left + 0.5, y + 0.5, post.box - 1, size - 1);
+    } else {
+      context.fillStyle = palette.ink;
+      context.fillRect(place.left, y, post.box, size);
+    }
+    context.setLineDash([]);
+    setText(view, post.toCome ? palette.ink : palette.on, 600, 0.96);
+    context.textAlign = 'center';
+    context.fillText(post.letters, place.left + post.box / 2, y + size / 2 + 0.5);
+    if (page && place.word && layout.style === 'page') {
+      setText(view, palette.ink, 500);
+      context.textAlign = 'left';
+      context.fillText(post.word, place.left + post.box + 6, y + size / 2 + 0.5);
+    }
+  }
+};
+
+/** Height of the drink's surface at a time: where a post is cut off. */
+function surface(view: View, at: number): number {
+  const { picture, layout } = view;
+  const value = valueAt(picture.curve, at)?.gravity ?? picture.rings.findLast((item) => item.at <= at)?.gravity ?? picture.originalGravity ?? layout.gravity.max;
+  return view.y(layout.gravity, value);
+}
+
+/** `flat 31 h` in ochre, `equal` in green, over the stretch it speaks of. */
+export const bracket: Mark = (view) => {
+  const { context, palette, layout, picture } = view;
+  if (!picture.bracket) return;
+  const { from, to, gravity, words, kind } = picture.bracket;
+  const page = isPage(view);
+  const left = Math.max(view.left, view.x(from));
+  const right = Math.min(view.right, view.x(to));
+  if (right - left < 4) return;
+  const y = view.y(layout.gravity, gravity) - (page ? 30 : kind === 'equal' ? 24 : 10);
+  const colour = kind === 'flat' ? palette.ochre : palette.green;
+  context.strokeStyle = colour;
+  context.lineWidth = page ? 1.8 : 1.5;
+  line(context, [[left, y + 7], [left, y], [right, y], [right, y + 7]]);
+  setText(view, colour, 600);
+  const width = context.measureText(words).width;
+  // The words stand over their bracket; a short one near now lets them run to the left.
+  context.textAlign = right - left >= width ? (kind === 'equal' ? 'center' : 'left') : 'right';
+  const x = context.textAlign === 'left' ? left : context.textAlign === 'center' ? (left + right) / 2 : right - 1;
+  context.fillText(words, x, y - 9);
+};
+
+/** A bar on the bed over the likely days of the end. */
+export const likelyEnd: Mark = (view) => {
+  const { context, palette, layout, picture, right } = view;
+  if (!picture.likelyEnd || picture.expected.length > 1) return;
+  const page = isPage(view);
+  const bedY = view.y(layout.gravity, picture.bed?.value ?? layout.gravity.min);
+  const from = view.x(picture.likelyEnd.lo);
+  const to = view.x(picture.likelyEnd.hi);
+  context.save();
+  clipToPlot(view);
+  context.fillStyle = palette.ink;
+  context.fillRect(from, bedY - 2.5, Math.max(5, to - from), 5);
+  context.restore();
+  const words = page ? `bed on ${picture.likelyEnd.words}` : `${(picture.bed?.value ?? 0).toFixed(3)} · ${picture.likelyEnd.words}`;
+  context.textAlign = 'right';
+  if (page) {
+    setText(view, palette.ink, 600);
+    const width = context.measureText(words).width;
+    const at = Math.min(Math.max(to, view.x(picture.now) + width + 24), right - 6);
+    const reach = valueAt(picture.curve, picture.likelyEnd.lo)?.hi ?? picture.bed?.hi ?? layout.gravity.min;
+    if (at - width > view.x(picture.now) + 8) underText(view, words, at, Math.max(view.top + 30, view.y(layout.gravity, reach) - 20));
+    return;
+  }
+  if (layout.height < 46) return;
+  const beyond = from > right - 4;
+  setText(view, beyond ? palette.ink2 : palette.ink, 500, 0.96);
+  context.fillText(beyond ? `to ${words} ›` : words, Math.min(Math.max(to, view.x(picture.now) + 190), right - 4), view.bottom - 13);
+};
+
+export const bedWords: Mark = (view) => {
+  const { context, palette, layout, picture, right } = view;
+  if (!picture.bed || layout.style === 'lane') return;
+  const doubt = Math.max(0.001, (picture.bed.hi - picture.bed.lo) / 2);
+  const figures = `${picture.bed.value.toFixed(3)} ± ${doubt.toFixed(3)}`;
+  setText(view, palette.ink, layout.style === 'phone' ? 600 : 500);
+  context.textAlign = 'right';
+  underText(view, layout.style === 'phone' ? `bed ${figures}` : `bed: where it should stop, ${figures}`, right - 6, view.y(layout.gravity, picture.bed.value) + (layout.style === 'phone' ? 12 : 10));
+};
+
+/** `what it should have done, 8 in 10`, with a hairline to the band. */
+export const expectedWords: Mark = (view) => {
+  const { context, palette, layout, picture } = view;
+  if (picture.expected.length < 2) return;
+  const now = view.x(picture.now);
+  const room = view.right - now;
+  if (!isPage(view)) {
+    const point = valueAt(picture.expected, picture.now + (picture.expected.at(-1)!.at - picture.now) * 0.25);
+    if (!point || room < 110) return;
+    setText(view, palette.ink3, 500, 0.96);
+    context.textAlign = 'left';
+    context.fillText('expected', now + 62, view.y(layout.gravity, point.gravity) - 16);
+    return;
+  }
+  const words = layout.style === 'phone' ? 'should have, 8 in 10' : 'what it should have done, 8 in 10';
+  setText(view, palette.ink2);
+  const width = context.measureText(words).width;
+  const point = valueAt(picture.expected, picture.now + (picture.expected.at(-1)!.at - picture.now) * 0.2);
+  if (!point || room < width + 60) return;
+  const foot = { x: view.x(point.at), y: view.y(layout.gravity, (point.hi + point.gravity) / 2) };
+  const y = Math.max(view.top + 40, view.y(layout.gravity, point.hi) - 22);
+  const x = Math.min(foot.x + 54, view.right - width - 6);
+  context.strokeStyle = palette.ink2;
+  context.lineWidth = 1;
+  line(context, [[foot.x, foot.y], [x - 6, y]]);
+  context.textAlign = 'left';
+  underText(view, words, x, y);
+};
+
+/** The one line through all strips, and the bright dot where the truth is known. */
+export const nowLine = (timeZone: string): Mark => (view) => {
+  const { context, palette, layout, picture, top, bottom } = view;
+  const x = view.x(picture.now);
+  const page = isPage(view);
+  if (inside(view, x)) {
+    context.strokeStyle = palette.ink;
+    context.lineWidth = 1.5;
+    line(context, [[x, top], [x, bottom]]);
+    if (page) {
+      const words = `now ${clock(picture.now, timeZone)}`;
+      setText(view, palette.ink, 600);
+      const width = context.measureText(words).width + 14;
+      const left = Math.min(x - 0.75, view.right - width);
+      context.fillStyle = palette.ink;
+      context.fillRect(left, top, width, 18);
+      setText(view, palette.on, 600);
+      context.textAlign = 'left';
+      context.fillText(words, left + 7, top + 9.5);
+    }
+  }
+  dot(view);
+  figuresNow(view, x);
+};
+
+function dot(view: View): void {
+  const { context, palette, layout, picture } = view;
+  const gravity = gravityNow(picture);
+  const x = view.x(knownUntil(picture));
+  if (gravity === null || !inside(view, x, 4)) return;
+  const y = view.y(layout.gravity, gravity);
+  context.beginPath();
+  context.arc(x, y, picture.silentAt === null ? 5 : 4.4, 0, Math.PI * 2);
+  if (picture.silentAt === null) {
+    context.fillStyle = palette.lit;
+    context.fill();
+    context.beginPath();
+    context.arc(x, y, 4, 0, Math.PI * 2);
+    context.fillStyle = palette.ink;
+    context.fill();
+    return;
+  }
+  context.fillStyle = palette.lit;
+  context.fill();
+  context.strokeStyle = palette.ink;
+  context.lineWidth = 1.5;
+  context.setLineDash([2.6, 2]);
+  context.stroke();
+}
+
+/** `15.4 °C low`, and on a page `2.6 below range`. */
+export function temperatureWords(picture: Pick<Picture, 'readings' | 'range'>, long: boolean): string | null {
+  const value = picture.readings.temperature.findLast((item) => item !== null);
+  if (value === null || value === undefined) return null;
+  const figure = `${value.toFixed(1).replace('-', '−')} °C`;
+  const under = picture.range ? picture.range.min - value : 0;
+  const over = picture.range ? value - picture.range.max : 0;
+  if (under >= 0.05) return long ? `${figure}, ${under.toFixed(1)} below range` : `${figure} low`;
+  if (over >= 0.05) return long ? `${figure}, ${over.toFixed(1)} above range` : `${figure} high`;
+  return figure;
+}
+
+function figuresNow(view: View, x: number): void {
+  const { context, palette, layout, picture } = view;
+  const words = temperatureWords(picture, layout.style === 'page');
+  context.textAlign = 'left';
+  const put = (text: string, y: number) => {
+    const width = context.measureText(text).width;
+    // Right of the line, or left of it where the plot ends.
+    const at = x + 8 + width <= view.right ? x + 8 : x - 8 - width;
+    if (at >= view.left) context.fillText(text, at, y);
+  };
+  if (layout.temperature && words) {
+    const lane = layout.style === 'lane';
+    setText(view, palette.mercury, lane ? 500 : 600, lane ? 0.96 : 1);
+    const value = picture.readings.temperature.findLast((item) => item !== null) ?? layout.temperature.min;
+    put(words, lane ? view.bottom - 13 : Math.min(view.y(layout.temperature, value), view.top + layout.temperature.top + layout.temperature.height - 4));
+  }
+  const gas = picture.gas.findLast((bin) => bin.at <= picture.now);
+  if (layout.gas && gas) {
+    setText(view, palette.ink, 600);
+    put(gas.value.toFixed(2), Math.min(view.y(layout.gas, gas.value), view.y(layout.gas, 0) - 7));
+  }
+}
