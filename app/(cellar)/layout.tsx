@@ -1,0 +1,10 @@
+import { redirect } from 'next/navigation';
+import type { ReactNode } from 'react';
+import { CellarShell } from '@/components/shell/CellarShell';
+import { currentSession } from '@/lib/auth/session';
+
+/** Every page of a cellar is for somebody who is signed in. */
+export default async function CellarLayout({ children }: { children: ReactNode }) {
+  if (!(await currentSession())) redirect('/sign-in');
+  return <CellarShell>{children}</CellarShell>;
+}

@@ -1,0 +1,7 @@
+import { endpoints } from '@/lib/contracts/endpoints';
+import { route } from '@/lib/http/route';
+import { getSensor } from '@/lib/services/sensors/get';
+import { updateSensor } from '@/lib/services/sensors/update';
+
+export const GET = route(endpoints.getSensor, ({ actor, params }) => getSensor(actor, params.id));
+export const PATCH = route(endpoints.updateSensor, ({ actor, params, body }) => updateSensor(actor, params.id, body));

@@ -1,0 +1,31 @@
+'use client';
+
+import type { ReactNode } from 'react';
+import { useAlerts } from '@/lib/client/alerts';
+import { useLiveChanges } from '@/lib/client/use-live-changes';
+import { Header } from './Header';
+import { OfflineBar } from './OfflineBar';
+import { PhoneTabs } from './PhoneTabs';
+import { placesFor } from './places';
+import { useGlance } from './use-glance';
+
+/** What stands around every page of a cellar: head, tabs, and the line that keeps the page new. */
+export function CellarShell({ children }: { children: ReactNode }) {
+  const live = useLiveChanges();
+  const glance = useGlance();
+  const { counts } = useAlerts({ state: 'open', limit: 1 });
+  const places = placesFor(glance.may, counts?.open ?? 0);
+  return (
+    <>
+      <a href="#page" className="type-label absolute -top-24 left-2 z-40 border-[1.5px] border-ink bg-lit px-3 py-2 text-ink focus:top-2">
+        Past the head of the page
+      </a>
+      <Header glance={glance} places={places} />
+      <OfflineBar live={live} timeZone={glance.timeZone} />
+      <main id="page" tabIndex={-1} className="pb-20 outline-none strip:pb-0">
+        {children}
+      </main>
+      <PhoneTabs places={places} />
+    </>
+  );
+}

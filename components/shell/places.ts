@@ -1,0 +1,30 @@
+import type { ComponentType } from 'react';
+import { FlagIcon, FloatIcon, LinesIcon, ShelfIcon } from '@/components/ui/icons';
+import type { Action } from '@/lib/contracts/actions';
+
+/** A page of the main navigation. */
+export interface Place {
+  href: '/shelf' | '/alerts' | '/sensors' | '/settings';
+  name: string;
+  icon: ComponentType<{ size?: number; className?: string }>;
+  /** Things there that nobody has yet. */
+  count?: number;
+}
+
+/** Pages below it are part of it too; a batch stands on the shelf. */
+export function isHere(place: Place, path: string): boolean {
+  if (place.href === '/shelf' && path.startsWith('/batches')) return true;
+  return path === place.href || path.startsWith(`${place.href}/`);
+}
+
+/** What is there for this person; a guest sees neither alerts nor sensors. */
+export function placesFor(may: (action: Action) => boolean, openAlerts: number): Place[] {
+  return [
+    { href: '/shelf', name: 'Shelf', icon: ShelfIcon },
+    ...(may('alerts.read') ? [{ href: '/alerts' as const, name: 'Alerts', icon: FlagIcon, count: openAlerts }] : []),
+    ...(may('sensors.read') ? [{ href: '/sensors' as const, name: 'Sensors', icon: FloatIcon }] : []),
+  ];
+}
+
+/** The phone's last tab: what stands behind the person's name elsewhere. */
+export const MORE: Place = { href: '/settings', name: 'More', icon: LinesIcon };
