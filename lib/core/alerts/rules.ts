@@ -48,9 +48,9 @@ export const ALERT_RULES: readonly AlertRule[] = [
     sentence: 'When a start is overdue for 1 h.',
   },
   {
-    // A blow-off tube is made for foam: with one on, foam is no news.
-    ...ANY, ...ACT, name: 'foam', call: 'neck', verdicts: ['hold'], necks: ['airlock', 'bung', 'open'], forMs: 15 * MINUTE, keepMs: 3 * HOUR, freshMs: 6 * HOUR,
-    sentence: 'When foam may reach a neck that has no blow-off tube, for 15 min.',
+    // A blow-off tube is made for foam, and an open vessel cannot be blocked: there foam is no news.
+    ...ANY, ...ACT, name: 'foam', call: 'neck', verdicts: ['hold'], necks: ['airlock', 'bung'], forMs: 15 * MINUTE, keepMs: 3 * HOUR, freshMs: 6 * HOUR,
+    sentence: 'When foam may reach an airlock or a bung, for 15 min.',
   },
   {
     ...ANY, ...KNOW, name: 'neck', call: 'neck', verdicts: ['yes'], necks: ['blow_off'], forMs: HOUR, keepMs: 3 * HOUR, freshMs: 12 * HOUR,

@@ -1,0 +1,22 @@
+import type { AlertPayload, MailPayload, RenderContext, Rendered } from './payload';
+import { alertOpened } from './templates/alert-opened';
+import { alertRepeated } from './templates/alert-repeated';
+import { alertResolved } from './templates/alert-resolved';
+import { ingestMail } from './templates/ingest';
+import { lookAgain } from './templates/look-again';
+import { several } from './templates/several';
+
+const ALERT_TEMPLATES: Record<AlertPayload['event'], (payload: AlertPayload, context: RenderContext) => Rendered> = {
+  opened: alertOpened,
+  repeated: alertRepeated,
+  look_again: lookAgain,
+  resolved: alertResolved,
+};
+
+/** One mail for what one person is owed now. @param payloads at least one */
+export function compose(payloads: readonly MailPayload[], context: RenderContext): Rendered {
+  const [only, ...more] = payloads;
+  if (!only) throw new RangeError('A mail needs something to tell.');
+  if (more.length) return several(payloads, context);
+  return only.template === 'ingest' ? ingestMail(only, context) : ALERT_TEMPLATES[only.event](only, context);
+}

@@ -1,0 +1,44 @@
+import type { Batch, Entry } from '@/db/models';
+import { EVENT_KINDS, type BatchEvent, type BatchSetup, type EventKind } from '@/lib/core/types';
+
+/** The columns that the judgement reads. */
+export type BatchFacts = Pick<
+  Batch,
+  'kind' | 'pitchedAt' | 'originalGravity' | 'volumeL' | 'vesselL' | 'attenuationMinPercent' | 'attenuationMaxPercent' | 'alcoholToleranceAbv' | 'temperatureMinC' | 'temperatureMaxC' | 'neck'
+>;
+export type EntryFacts = Pick<Entry, 'kind' | 'at' | 'gravity' | 'volumeL' | 'sugarG' | 'fruitG' | 'neck' | 'createdAt'>;
+
+/** `observation` is a note; `pitch` is in the batch itself. */
+function kindOf(kind: string): EventKind | null {
+  if (kind === 'observation') return 'note';
+  return (EVENT_KINDS as readonly string[]).includes(kind) ? (kind as EventKind) : null;
+}
+
+function eventOf(entry: EntryFacts): BatchEvent[] {
+  const kind = kindOf(entry.kind);
+  if (!kind) return [];
+  const { sugarG, fruitG, volumeL, gravity, neck } = entry;
+  return [{ at: entry.at.getTime(), kind, sugarG, fruitG, volumeL, gravity, neck, knownAt: entry.createdAt.getTime() }];
+}
+
+/**
+ * What is known of a batch apart from its sensor, as the core takes it. A hand
+ * reading's gravity was corrected to 20 °C when it was logged.
+ * @param entries those not taken back, in any order
+ */
+export function setupOf(batch: BatchFacts, entries: readonly EntryFacts[], timeZone: string): BatchSetup {
+  const { attenuationMinPercent: attenuationMin, attenuationMaxPercent: attenuationMax, temperatureMinC: minC, temperatureMaxC: maxC } = batch;
+  return {
+    kind: batch.kind,
+    pitchedAt: batch.pitchedAt?.getTime() ?? null,
+    originalGravity: batch.originalGravity,
+    volumeL: batch.volumeL,
+    vesselL: batch.vesselL,
+    attenuation: attenuationMin === null || attenuationMax === null ? null : { min: attenuationMin / 100, max: attenuationMax / 100 },
+    alcoholToleranceAbv: batch.alcoholToleranceAbv,
+    temperature: minC === null || maxC === null ? null : { minC, maxC },
+    neck: batch.neck,
+    events: entries.flatMap(eventOf).sort((a, b) => a.at - b.at),
+    timeZone,
+  };
+}
