@@ -1,0 +1,120 @@
+import 'server-only';
+import type { NextRequest } from 'next/server';
+import { z } from 'zod';
+import { authorize } from '../auth/authorize';
+import type { Actor } from '../auth/policies';
+import { sessionOf, type Session } from '../auth/session';
+import type { Endpoint } from '../contracts/endpoints';
+import { ForbiddenError, InvalidError, NotFoundError, UnauthenticatedError, UnavailableError, type FieldErrors } from '../errors';
+import { readJson } from './body';
+import { problemOf } from './problem';
+import { requireSameSite } from './same-site';
+
+type Parsed<S> = S extends z.ZodType ? z.output<S> : undefined;
+type Answer<S> = S extends z.ZodType ? z.output<S> : void;
+type Part<E extends Endpoint, K extends 'params' | 'query' | 'body'> = E extends Record<K, infer S> ? Parsed<S> : undefined;
+
+export interface RouteContext<E extends Endpoint> {
+  request: NextRequest;
+  /** Absent only where anyone may call. */
+  session: E['access'] extends 'anyone' ? null : Session;
+  /** Null where it is enough to be signed in, or not even that. */
+  actor: E['access'] extends 'person' | 'anyone' ? null : Actor;
+  params: Part<E, 'params'>;
+  query: Part<E, 'query'>;
+  body: Part<E, 'body'>;
+  /** Headers to add to a good answer. */
+  headers: Headers;
+}
+
+/** Longer than any answer takes; past it the database stalls, and waiting longer helps nobody. */
+const DEADLINE_MS = 8_000;
+
+/**
+ * A route: who asks, may they, is the request well formed, one service call, an
+ * answer held to its schema. Whatever is thrown becomes a problem document.
+ */
+export function route<E extends Endpoint>(endpoint: E, handle: (context: RouteContext<E>) => Promise<Answer<E['response']>>) {
+  return async (request: NextRequest, { params }: { params: Promise<Record<string, string>> }): Promise<Response> => {
+    try {
+      return await inTime(answer(endpoint, handle, request, await params));
+    } catch (error) {
+      return problemOf(error, { method: request.method, path: request.nextUrl.pathname });
+    }
+  };
+}
+
+async function answer<E extends Endpoint>(endpoint: E, handle: (context: RouteContext<E>) => Promise<Answer<E['response']>>, request: NextRequest, rawParams: Record<string, string>): Promise<Response> {
+  const { session, actor } = await admit(endpoint, request);
+  const headers = new Headers({ 'cache-control': 'private, no-store' });
+  const context = {
+    request,
+    session,
+    actor,
+    params: parseParams(endpoint, rawParams),
+    query: parse(endpoint.query, queryOf(request), 'Some values of the query are wrong.'),
+    body: endpoint.body ? parse(endpoint.body, await readJson(request), 'Some values are wrong.') : undefined,
+    headers,
+    // The conditional types of the context follow the endpoint's literal; the checks above make them hold.
+  } as RouteContext<E>;
+  const result = await handle(context);
+  if (endpoint.response === null) return new Response(null, { status: endpoint.status, headers });
+  return Response.json(endpoint.response.parse(result), { status: endpoint.status, headers });
+}
+
+/** @throws UnauthenticatedError, ForbiddenError, RequestError: who asks comes before what they ask. */
+export async function admit(endpoint: Endpoint, request: NextRequest): Promise<{ session: Session | null; actor: Actor | null }> {
+  const { access } = endpoint;
+  if (access === 'anyone') return { session: null, actor: null };
+  if (access === 'sensor') throw new Error('A sensor’s route checks its own credential.');
+  if (endpoint.method !== 'GET') requireSameSite(request);
+  const session = await sessionOf(request.cookies);
+  if (!session) throw new UnauthenticatedError();
+  if (access === 'person') return { session, actor: null };
+  if (!session.actor) throw new ForbiddenError('You do not belong to a cellar. Ask its keeper to invite you.');
+  if (access !== 'member') authorize(session.actor, access);
+  return { session, actor: session.actor };
+}
+
+/** A query as an object; a name given twice stays a list, which no schema here takes. */
+function queryOf(request: NextRequest): Record<string, string | string[]> {
+  const query: Record<string, string | string[]> = {};
+  for (const name of new Set(request.nextUrl.searchParams.keys())) {
+    const values = request.nextUrl.searchParams.getAll(name);
+    query[name] = values.length === 1 ? values[0]! : values;
+  }
+  return query;
+}
+
+/** A path that names nothing possible names nothing: 404, as for a thing that is not there. */
+function parseParams(endpoint: Endpoint, raw: Record<string, string>): unknown {
+  if (!endpoint.params) return undefined;
+  const parsed = endpoint.params.safeParse(raw);
+  if (!parsed.success) throw new NotFoundError();
+  return parsed.data;
+}
+
+function parse(schema: z.ZodType | undefined, value: unknown, message: string): unknown {
+  if (!schema) return undefined;
+  const parsed = schema.safeParse(value);
+  if (!parsed.success) throw new InvalidError(message, fieldErrors(parsed.error));
+  return parsed.data;
+}
+
+export function fieldErrors(error: z.ZodError): FieldErrors {
+  const fields: FieldErrors = {};
+  for (const issue of error.issues) (fields[issue.path.join('.') || 'body'] ??= []).push(issue.message);
+  return fields;
+}
+
+async function inTime(work: Promise<Response>): Promise<Response> {
+  let timer: NodeJS.Timeout | undefined;
+  const late = new Promise<never>((_, reject) => {
+    timer = setTimeout(() => reject(new UnavailableError('The database takes too long right now. Look whether the change was kept before you try again.')), DEADLINE_MS);
+  });
+  try {
+    return await Promise.race([work, late]);
+  } finally {
+    clearTimeout(timer);
+  }
+}
