@@ -1,7 +1,7 @@
 import { sucroseDensity, sucroseFractionOf } from './density';
 
 /** Cubic expansion of hydrometer glass per kelvin, conventional value of ISO 1768:1975. */
-const GLASS_EXPANSION = 25e-6;
+export const GLASS_EXPANSION = 25e-6;
 
 /**
  * Specific gravity at 20 °C/20 °C from what a glass hydrometer shows in a sample
