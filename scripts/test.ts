@@ -14,8 +14,9 @@ interface Count {
 }
 
 function run(command: string, args: string[]): Promise<number> {
+  const env: NodeJS.ProcessEnv = { ...process.env, NEXT_TELEMETRY_DISABLED: '1' };
   return new Promise((done, reject) => {
-    spawn(command, args, { cwd: ROOT, stdio: ['ignore', 'inherit', 'inherit'], env: { ...process.env, NEXT_TELEMETRY_DISABLED: '1', NODE_ENV: undefined } })
+    spawn(command, args, { cwd: ROOT, stdio: ['ignore', 'inherit', 'inherit'], env })
       .on('error', reject)
       .on('exit', (code) => done(code ?? 1));
   });
