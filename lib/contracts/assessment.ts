@@ -58,7 +58,8 @@ function presentWide(value: WideEstimate | null, digits: number) {
   return value && { ...presentEstimate(value, digits)!, lo95: rounded(value.lo95, digits), hi95: rounded(value.hi95, digits) };
 }
 
-function presentCall(call: Call): CallBody {
+/** The wire form of one call. */
+export function presentCall(call: Call): CallBody {
   return {
     verdict: call.verdict,
     kind: call.kind,

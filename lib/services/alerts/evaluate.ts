@@ -1,0 +1,106 @@
+import { randomUUID } from 'node:crypto';
+import { isDeepStrictEqual } from 'node:util';
+import type { Transaction } from 'sequelize';
+import { Alert } from '@/db/models';
+import { lockAlertStates, saveAlertState } from '@/db/queries/alert-states';
+import { toldOfAlerts } from '@/db/queries/outbox';
+import { notifyChange } from '@/lib/services/changes';
+import { lookAt, type LookContext } from '@/lib/core/alerts/look';
+import { INACTIVE, isUp, step, type AlertEvent, type AlertState, type Look } from '@/lib/core/alerts/machine';
+import { ALERT_RULES, type AlertRule } from '@/lib/core/alerts/rules';
+import type { Assessment, Call, Instant } from '@/lib/core/types';
+import type { AlertPayload } from '@/lib/mail/payload';
+import { alertPayload, type BatchName, type CellarName } from './payload';
+import { tell } from './tell';
+
+interface Judged {
+  batch: BatchName;
+  cellar: CellarName;
+  /** Null: the batch is over, and so is all that could be said of it. */
+  assessment: Assessment | null;
+  context: LookContext;
+  at: Instant;
+}
+
+/** Where one rule stands, and the alert it has up. */
+interface Standing {
+  state: AlertState;
+  alert: Alert | null;
+}
+
+/**
+ * Moves every rule of a batch one step, and carries out what the steps decide:
+ * the alert's row, the state of the machine and the mails owed are written in
+ * the one transaction given.
+ * @returns whether anything a person sees has changed
+ */
+export async function evaluateAlerts(judged: Judged, transaction: Transaction): Promise<boolean> {
+  const { batch, at } = judged;
+  const rows = await lockAlertStates(batch.id, transaction);
+  const ids = rows.flatMap((row) => (row.alertId === null ? [] : [row.alertId]));
+  const alerts = ids.length ? await Alert.findAll({ where: { id: ids }, transaction }) : [];
+
+  let seen = false;
+  for (const rule of ALERT_RULES) {
+    const row = rows.find((item) => item.rule === rule.name);
+    const before: Standing = { state: row?.state ?? INACTIVE, alert: alerts.find((item) => item.id === row?.alertId) ?? null };
+    const look: Look = judged.assessment ? lookAt(rule, judged.assessment, judged.context, at) : { type: 'end' };
+    const { state, events } = step(rule, before.state, look, at);
+    const call = judged.assessment?.calls[rule.call] ?? null;
+    let alert = before.alert;
+    for (const event of events) alert = await carryOut({ judged, rule, call, event, alert }, transaction);
+    if (alert && call && look.type === 'true' && isUp(state) && alert.kind !== call.kind) {
+      await alert.update({ kind: call.kind, evidence: call }, { transaction });
+      seen = true;
+    }
+    const alertId = state.phase === 'inactive' || state.phase === 'pending' ? null : (alert?.id ?? null);
+    const changed = alertId !== (row?.alertId ?? null) || !isDeepStrictEqual(state, before.state);
+    if (changed) await saveAlertState(batch.id, { rule: rule.name, state, alertId }, transaction);
+    seen ||= events.length > 0;
+  }
+  if (seen) await notifyChange({ cellar: batch.cellarId, kind: 'alert', batch: batch.id }, transaction);
+  return seen;
+}
+
+interface Happened {
+  judged: Judged;
+  rule: AlertRule;
+  call: Call | null;
+  event: AlertEvent;
+  alert: Alert | null;
+}
+
+/** Writes what one event means. Returns the alert that it concerns. */
+async function carryOut({ judged, rule, call, event, alert }: Happened, transaction: Transaction): Promise<Alert | null> {
+  const { batch, cellar, at } = judged;
+  const mail = async (subject: Alert, name: AlertPayload['event'], key: string, people: readonly string[], shown: Call) => {
+    const payload = alertPayload({ alertId: subject.id, rule, event: name, call: shown, since: subject.since.getTime(), at, batch, cellar });
+    await tell({ cellarId: batch.cellarId, alertId: subject.id, people, key: `alert:${subject.id}:${key}`, payload, level: rule.level, at }, transaction);
+  };
+
+  switch (event.type) {
+    case 'opened': {
+      if (!call) throw new Error('An alert opens on a call.');
+      const { cellarId, id: batchId } = batch;
+      const opened = await Alert.create(
+        { id: randomUUID(), cellarId, batchId, call: rule.call, kind: call.kind, level: rule.level, state: 'open', since: new Date(event.since), openedAt: new Date(at), evidence: call },
+        { transaction },
+      );
+      await mail(opened, 'opened', 'opened', await toldOfAlerts(cellarId, transaction), call);
+      return opened;
+    }
+    case 'repeated':
+      if (alert && call) await mail(alert, 'repeated', `repeated-${event.count}`, await toldOfAlerts(batch.cellarId, transaction), call);
+      return alert;
+    case 'look_again':
+      if (alert?.acknowledgedBy) await mail(alert, 'look_again', `look-again-${at}`, [alert.acknowledgedBy], call ?? alert.evidence);
+      return alert;
+    case 'resolved':
+      if (!alert) return null;
+      await alert.update({ state: 'resolved', resolvedAt: new Date(at) }, { transaction });
+      if (rule.tellsEnd && event.by === 'data') await mail(alert, 'resolved', 'resolved', await toldOfAlerts(batch.cellarId, transaction), alert.evidence);
+      return alert;
+    case 'taken':
+      return alert;
+  }
+}

@@ -1,0 +1,79 @@
+import { isDeepStrictEqual } from 'node:util';
+import { Op, type Transaction } from 'sequelize';
+import { inTransaction } from '@/db/client';
+import { Batch, Cellar, Entry } from '@/db/models';
+import { tryLockBatch } from '@/db/queries/alert-states';
+import { readingsOfBatch } from '@/db/queries/batch-readings';
+import { batchState, keepAssessment, saveBatchState } from '@/db/queries/batch-states';
+import { systemClock, type Clock } from '@/lib/clock';
+import { presentJudgement, type AssessmentBody, type JudgementBody } from '@/lib/contracts/assessment';
+import { assess } from '@/lib/core/assess';
+import { CALL_NAMES, type CallName } from '@/lib/core/types';
+import { evaluateAlerts } from '@/lib/services/alerts/evaluate';
+import { notifyChange } from '@/lib/services/changes';
+import { setupOf } from './setup';
+
+/** Points of the curve that the shelf's lanes get; the batch page asks for all. */
+const LANE_POINTS = 120;
+
+export interface AssessDeps {
+  clock?: Clock;
+  /** False while the ingest is or was just down. */
+  silenceCounts?: boolean;
+}
+
+/** `busy`: another worker is at this batch. `gone`: there is no such batch. */
+export type AssessOutcome = 'assessed' | 'ended' | 'busy' | 'gone';
+
+/**
+ * Judges a batch as it stands now, keeps the judgement, and moves its alerts:
+ * all in one transaction, by one worker at a time. The house does this by
+ * itself, so nobody is asked for leave.
+ */
+export function assessBatch(batchId: string, { clock = systemClock, silenceCounts = true }: AssessDeps = {}): Promise<AssessOutcome> {
+  return inTransaction(async (transaction) => {
+    if (!(await tryLockBatch(batchId, transaction))) return 'busy';
+    const batch = await Batch.findByPk(batchId, { transaction });
+    if (!batch) return 'gone';
+    const cellar = await Cellar.findByPk(batch.cellarId, { transaction, rejectOnEmpty: true });
+    const at = clock.now();
+    const context = { neck: batch.neck, silenceCounts };
+    if (batch.state === 'ended') {
+      await evaluateAlerts({ batch, cellar, assessment: null, context, at }, transaction);
+      return 'ended';
+    }
+
+    const entries = await Entry.findAll({ where: { batchId, removedAt: { [Op.is]: null } }, transaction });
+    const readings = await readingsOfBatch(batchId, at, transaction);
+    const judgement = assess(setupOf(batch, entries, cellar.timeZone), readings, at);
+
+    await keep(batch, presentJudgement(judgement), new Date(at), transaction);
+    await evaluateAlerts({ batch, cellar, assessment: judgement.assessment, context, at }, transaction);
+    return 'assessed';
+  });
+}
+
+/** Keeps the judgement for the screens, and for later where a verdict changed; says so where anything did. */
+async function keep(batch: Batch, { curve, expected, gas: _, ...assessment }: JudgementBody, at: Date, transaction: Transaction): Promise<void> {
+  const { id: batchId, cellarId } = batch;
+  const before = (await batchState<AssessmentBody>(batchId, transaction))?.assessment ?? null;
+  await saveBatchState({ batchId, cellarId, at, assessment, curve: thinned(curve), expected: thinned(expected) }, transaction);
+  const changed = changedCalls(before, assessment);
+  if (changed.length) await keepAssessment({ cellarId, batchId, at, changed, assessment }, transaction);
+  const same = before !== null && isDeepStrictEqual({ ...before, at: null }, { ...assessment, at: null });
+  if (!same) await notifyChange({ cellar: cellarId, kind: 'assessment', batch: batchId }, transaction);
+}
+
+function changedCalls(before: AssessmentBody | null, after: AssessmentBody): CallName[] {
+  return CALL_NAMES.filter((name) => {
+    const [old, now] = [before?.calls[name], after.calls[name]];
+    return old?.verdict !== now.verdict || old?.kind !== now.kind;
+  });
+}
+
+/** At most LANE_POINTS of them, evenly, with the first and the last. */
+function thinned<T>(points: readonly T[]): T[] {
+  if (points.length <= LANE_POINTS) return [...points];
+  const step = (points.length - 1) / (LANE_POINTS - 1);
+  return Array.from({ length: LANE_POINTS }, (_, index) => points[Math.round(index * step)]!);
+}
