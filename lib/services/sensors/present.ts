@@ -1,0 +1,26 @@
+import type { SensorRow } from '@/db/queries/sensors';
+import type { SensorBody } from '@/lib/contracts/sensors';
+
+const iso = (at: string | Date) => new Date(at).toISOString();
+
+/** What goes over the wire for a sensor; its secret's hash never does. */
+export function presentSensor(row: SensorRow): SensorBody {
+  return {
+    id: row.identifier,
+    name: row.name,
+    kind: row.kind,
+    interval_s: row.intervalS,
+    disabled: row.disabledAt !== null,
+    created_at: iso(row.createdAt),
+    batch: row.batch && { id: row.batch.id, name: row.batch.name, since: iso(row.batch.since) },
+    last: row.last && {
+      measured_at: iso(row.last.measuredAt),
+      received_at: iso(row.last.receivedAt),
+      gravity: row.last.gravity,
+      temperature: row.last.temperature,
+      battery: row.last.battery,
+      signal: row.last.signal,
+    },
+    refused_24h: row.refused24h,
+  };
+}
