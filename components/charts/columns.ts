@@ -1,5 +1,5 @@
 import uPlot from 'uplot';
-import { cutAt, knownUntil, type GravityPoint, type Picture } from './picture';
+import { cutAt, hasStopped, knownUntil, type GravityPoint, type Picture } from './picture';
 
 /** Place of each series in uPlot's columns; 0 is time. */
 export const SERIES = { bandHigh: 1, bandLow: 2, fit: 3, forecast: 4, expectedHigh: 5, expectedLow: 6, expected: 7, readings: 8, temperature: 9, gas: 10 } as const;
@@ -26,17 +26,18 @@ function readingsAsCurve(picture: Picture): GravityPoint[] {
 
 /** All that is drawn as lines, bands, dots and bars, joined on one ascending time column. */
 export function columnsOf(picture: Picture): uPlot.AlignedData {
-  const strayed = picture.expected.length > 1;
+  const stopped = hasStopped(picture);
   const fitted = picture.curve.length > 1;
   const { past, coming } = cutAt(fitted ? picture.curve : readingsAsCurve(picture), knownUntil(picture));
-  // Where the batch left its curve, the band belongs to what it should have done.
-  const ahead = strayed ? [] : coming;
+  // Where the batch has stopped, the band belongs to what it should have done.
+  const ahead = stopped ? [] : coming;
   const banded = fitted ? [...past, ...ahead.slice(1)] : [];
   const tables: Table[] = [
     ascending(table(banded, (point) => point.hi, (point) => point.lo)),
     ascending(table(past, (point) => point.gravity)),
     ascending(table(ahead, (point) => point.gravity)),
-    ascending(table(strayed ? picture.expected : [], (point) => point.hi, (point) => point.lo, (point) => point.gravity)),
+    ascending(table(stopped ? picture.expected : [], (point) => point.hi, (point) => point.lo)),
+    ascending(table(picture.expected, (point) => point.gravity)),
     ascending([[...picture.readings.at], [...picture.readings.gravity], [...picture.readings.temperature]]),
     ascending([picture.gas.map((bin) => bin.at), picture.gas.map((bin) => bin.value)]),
   ];

@@ -5,7 +5,7 @@ import { airlockLine, bed, calendarRules, rangeBand, stripNames, stripRules, val
 import { hazePattern } from './haze';
 import { bedWords, bracket, expectedWords, likelyEnd, nowLine, posts, rings } from './over';
 import { drinkShare, thin, type Palette } from './palette';
-import type { Picture, Span } from './picture';
+import { hasStopped, type Picture, type Span } from './picture';
 import { stretched, type Layout } from './strips';
 import { drawMarks, viewOf, type View } from './view';
 
@@ -32,6 +32,7 @@ const HIDDEN = { show: false };
 export function chartOptions(scene: () => Scene, size: { width: number; height: number }, handlers: ChartHandlers = {}): uPlot.Options {
   const page = scene().layout.style !== 'lane';
   const { left, right } = scene().layout;
+  const stopped = page && hasStopped(scene().picture);
   const ink = () => scene().palette.ink;
   const ratio = () => uPlot.pxRatio || 1;
   const view = (plot: uPlot): View => {
@@ -64,7 +65,7 @@ export function chartOptions(scene: () => Scene, size: { width: number; height: 
   series[SERIES.forecast] = { ...silent, stroke: ink, width: page ? 1.6 : 1.4, dash: [5, 3] };
   series[SERIES.expectedHigh] = silent;
   series[SERIES.expectedLow] = silent;
-  series[SERIES.expected] = { ...silent, stroke: () => (page ? scene().palette.ink : scene().palette.ink3), width: page ? 1.6 : 1.3, dash: page ? [5, 3] : [1.5, 3] };
+  series[SERIES.expected] = { ...silent, stroke: () => (stopped ? scene().palette.ink : scene().palette.ink3), width: stopped ? 1.6 : 1.3, dash: stopped ? [5, 3] : [1.5, 3] };
   series[SERIES.readings] = {
     scale: 'gravity',
     paths: () => null,

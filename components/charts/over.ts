@@ -1,5 +1,5 @@
 import { placePosts, keepClear, type Label } from './place';
-import { gravityNow, knownUntil, valueAt, type Picture } from './picture';
+import { gravityNow, hasStopped, knownUntil, valueAt, type Picture } from './picture';
 import { clock } from './zone';
 import { underText } from './ground';
 import { clipToPlot, crisp, line, setText, type Mark, type View } from './view';
@@ -124,7 +124,7 @@ export const bracket: Mark = (view) => {
 /** A bar on the bed over the likely days of the end. */
 export const likelyEnd: Mark = (view) => {
   const { context, palette, layout, picture, right } = view;
-  if (!picture.likelyEnd || picture.expected.length > 1) return;
+  if (!picture.likelyEnd || hasStopped(picture)) return;
   const page = isPage(view);
   const bedY = view.y(layout.gravity, picture.bed?.value ?? layout.gravity.min);
   const from = view.x(picture.likelyEnd.lo);
@@ -166,7 +166,7 @@ export const expectedWords: Mark = (view) => {
   if (picture.expected.length < 2) return;
   const now = view.x(picture.now);
   const room = view.right - now;
-  if (!isPage(view)) {
+  if (!isPage(view) || !hasStopped(picture)) {
     const point = valueAt(picture.expected, picture.now + (picture.expected.at(-1)!.at - picture.now) * 0.25);
     if (!point || room < 110) return;
     setText(view, palette.ink3, 500, 0.96);
@@ -191,7 +191,7 @@ export const expectedWords: Mark = (view) => {
 
 /** The one line through all strips, and the bright dot where the truth is known. */
 export const nowLine = (timeZone: string): Mark => (view) => {
-  const { context, palette, layout, picture, top, bottom } = view;
+  const { context, palette, picture, top, bottom } = view;
   const x = view.x(picture.now);
   const page = isPage(view);
   if (inside(view, x)) {

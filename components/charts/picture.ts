@@ -63,6 +63,9 @@ export interface Picture {
 /** The instant up to which the curve is known rather than foreseen. */
 export const knownUntil = (picture: Picture): number => Math.min(picture.now, picture.silentAt ?? picture.now);
 
+/** It lies flat and should not: then the band shows what it should have done, and there is no forecast. */
+export const hasStopped = (picture: Picture): boolean => picture.expected.length > 1 && picture.bracket?.kind === 'flat';
+
 /** The curve's value at a time by straight lines between its points; null outside it. */
 export function valueAt(curve: readonly GravityPoint[], at: number): GravityPoint | null {
   const first = curve[0];

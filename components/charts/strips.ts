@@ -109,7 +109,7 @@ function pageLayout(picture: Picture, style: 'page' | 'phone'): Layout {
       // A round value too near the bed's own figure gives way to it.
       gravity: roundSteps(gravity.min, gravity.max, phone ? 6 : 5).filter((value) => bed === null || Math.abs(value - bed) / (gravity.max - gravity.min) > 0.05),
       temperature: picture.range ? [picture.range.min, picture.range.max] : warmth ? roundSteps(warmth.min, warmth.max, 2) : [],
-      gas: gas ? roundSteps(0, gas.max, phone ? 1 : 3) : [],
+      gas: gas ? roundSteps(0, gas.max, phone ? 2 : 4) : [],
     },
     left: phone ? 46 : 68,
     right: phone ? 0 : 14,

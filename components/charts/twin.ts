@@ -1,4 +1,4 @@
-import { gravityNow, knownUntil, valueAt, type Picture } from './picture';
+import { gravityNow, hasStopped, knownUntil, valueAt, type Picture } from './picture';
 import { temperatureWords } from './over';
 import { clock, dayName } from './zone';
 
@@ -19,7 +19,7 @@ function sentenceOf(picture: Picture, name: string, timeZone: string): string {
   if (picture.silentAt !== null) parts[0] += ` when last heard, ${dayName(known, timeZone)} ${clock(known, timeZone)}`;
   if (picture.originalGravity !== null) parts.push(`fallen ${Math.round((picture.originalGravity - gravity) * 1000)} points from ${picture.originalGravity.toFixed(3)}`);
   if (picture.bed) parts.push(`should stop at ${picture.bed.value.toFixed(3)}, 8 in 10 between ${picture.bed.lo.toFixed(3)} and ${picture.bed.hi.toFixed(3)}`);
-  if (picture.likelyEnd && picture.expected.length < 2) parts.push(`likely ${picture.likelyEnd.words}`);
+  if (picture.likelyEnd && !hasStopped(picture)) parts.push(`likely ${picture.likelyEnd.words}`);
   if (picture.bracket) parts.push(picture.bracket.words);
   const warmth = temperatureWords(picture, true);
   if (warmth) parts.push(warmth);
