@@ -1,0 +1,56 @@
+import { QueryTypes, type Transaction } from 'sequelize';
+import type { Alert, Batch } from '../models';
+import { database } from '../client';
+
+export interface AlertRow extends Pick<Alert, 'id' | 'call' | 'kind' | 'level' | 'state' | 'since' | 'openedAt' | 'acknowledgedAt' | 'note' | 'lookAgainAt' | 'resolvedAt' | 'evidence'> {
+  /** The order's time as PostgreSQL writes it: whole microseconds, which a Date would cut. */
+  openedAtText: string;
+  batch: Pick<Batch, 'id' | 'name' | 'tag' | 'vesselKind' | 'drinkColour' | 'neck' | 'volumeL' | 'vesselL'>;
+  acknowledgedBy: { id: string; name: string } | null;
+  resolvedBy: { id: string; name: string } | null;
+  told: Array<{ person: string; at: string | null; state: 'waiting' | 'sent' | 'failed'; error: string | null }>;
+}
+
+interface Filter {
+  cellarId: string;
+  id?: string;
+  state?: string;
+  batchId?: string;
+  after?: { at: string; key: string } | null;
+  limit: number;
+}
+
+/** Alerts of a cellar, newest first, each with its batch and who was told of it. */
+export function findAlerts({ cellarId, id, state, batchId, after, limit }: Filter, transaction?: Transaction): Promise<AlertRow[]> {
+  return database().query<AlertRow>(
+    `select a.id, a.call, a.kind, a.level, a.state, a.since, a.opened_at as "openedAt", a.opened_at::text as "openedAtText",
+       a.acknowledged_at as "acknowledgedAt", a.note, a.look_again_at as "lookAgainAt", a.resolved_at as "resolvedAt", a.evidence,
+       json_build_object('id', b.id, 'name', b.name, 'tag', b.tag, 'vesselKind', b.vessel_kind, 'drinkColour', b.drink_colour, 'neck', b.neck, 'volumeL', b.volume_l, 'vesselL', b.vessel_l) as batch,
+       case when taker.id is not null then json_build_object('id', taker.id, 'name', taker.name) end as "acknowledgedBy",
+       case when clearer.id is not null then json_build_object('id', clearer.id, 'name', clearer.name) end as "resolvedBy",
+       coalesce((
+         select json_agg(json_build_object('person', p.name, 'at', o.sent_at, 'state', case when o.sent_at is not null then 'sent' when o.failed_at is not null then 'failed' else 'waiting' end, 'error', o.last_error) order by o.id)
+         from outbox o join people p on p.id = o.person_id where o.alert_id = a.id), '[]') as told
+     from alerts a
+     join batches b on b.id = a.batch_id
+     left join people taker on taker.id = a.acknowledged_by
+     left join people clearer on clearer.id = a.resolved_by
+     where a.cellar_id = $cellarId
+       and ($id::uuid is null or a.id = $id) and ($state::text is null or a.state = $state) and ($batchId::uuid is null or a.batch_id = $batchId)
+       and ($afterAt::timestamptz is null or (a.opened_at, a.id) < ($afterAt, $afterKey::uuid))
+     order by a.opened_at desc, a.id desc limit $limit`,
+    { bind: { cellarId, id: id ?? null, state: state ?? null, batchId: batchId ?? null, afterAt: after?.at ?? null, afterKey: after?.key ?? null, limit }, type: QueryTypes.SELECT, transaction },
+  );
+}
+
+export type AlertCounts = Record<'open' | 'acknowledged' | 'resolved', number>;
+
+/** How many alerts of a cellar, or of one batch of it, are in each state. */
+export async function countAlerts(cellarId: string, batchId: string | null): Promise<AlertCounts> {
+  const [row] = await database().query<AlertCounts>(
+    `select count(*) filter (where state = 'open')::int as open, count(*) filter (where state = 'acknowledged')::int as acknowledged, count(*) filter (where state = 'resolved')::int as resolved
+     from alerts where cellar_id = $cellarId and ($batchId::uuid is null or batch_id = $batchId)`,
+    { bind: { cellarId, batchId }, type: QueryTypes.SELECT },
+  );
+  return row ?? { open: 0, acknowledged: 0, resolved: 0 };
+}

@@ -1,0 +1,28 @@
+import type { AlertRow } from '@/db/queries/alerts';
+import { alertSchema, type AlertBody } from '@/lib/contracts/alerts';
+import { presentCall } from '@/lib/contracts/assessment';
+
+const iso = (at: string | Date | null) => (at === null ? null : new Date(at).toISOString());
+
+/** What goes over the wire for an alert. */
+export function presentAlert(row: AlertRow): AlertBody {
+  const { batch } = row;
+  return alertSchema.parse({
+    id: row.id,
+    batch: { id: batch.id, name: batch.name, tag: batch.tag, vessel_kind: batch.vesselKind, drink_colour: batch.drinkColour, neck: batch.neck, volume_l: batch.volumeL, vessel_l: batch.vesselL },
+    call: row.call,
+    kind: row.kind,
+    level: row.level,
+    state: row.state,
+    since: iso(row.since),
+    opened_at: iso(row.openedAt),
+    acknowledged_at: iso(row.acknowledgedAt),
+    acknowledged_by: row.acknowledgedBy,
+    note: row.note,
+    look_again_at: iso(row.lookAgainAt),
+    resolved_at: iso(row.resolvedAt),
+    resolved_by: row.resolvedBy,
+    evidence: presentCall(row.evidence),
+    told: row.told.map((one) => ({ person: one.person, means: 'mail', at: iso(one.at), state: one.state, error: one.error })),
+  });
+}
