@@ -11,26 +11,34 @@ export const EARLIEST_MS = Date.UTC(2015, 0, 1);
 export const REFUSED_BODY_BYTES = 2048;
 export const REFUSED_KEPT_DAYS = 30;
 
+/** A number inside its span, with one sentence for all that can be wrong with it. */
+const span = (low: number, high: number) => z.number(`must be a number from ${low} to ${high}`).min(low, `must be ${low} to ${high}`).max(high, `must be ${low} to ${high}`);
+
 /** One reading as a sensor sends it. Unknown keys are dropped. */
 export const reading = z
   .object({
-    at: z.iso.datetime({ offset: true, error: 'at must be RFC 3339 with a zone' }).optional(),
+    at: z.iso.datetime({ offset: true, error: 'at must be RFC 3339 with a zone, such as 2026-03-04T06:00:00Z' }).optional(),
     gravity: gravity.optional(),
-    inclination: z.number().min(0, 'must be 0 to 90').max(90, 'must be 0 to 90').optional(),
+    inclination: span(0, 90).optional(),
     temperature: temperatureC,
-    battery: z.number().min(0, 'must be 0 to 15').max(15, 'must be 0 to 15').optional(),
-    signal: z.number().min(-130, 'must be -130 to 0').max(0, 'must be -130 to 0').optional(),
-    foam: z.number().min(0, 'must be 0 to 500').max(500, 'must be 0 to 500').optional(),
-    sequence: z.number().int('must be a whole number').min(0, 'must not be negative').max(Number.MAX_SAFE_INTEGER).optional(),
+    battery: span(0, 15).optional(),
+    signal: span(-130, 0).optional(),
+    foam: span(0, 500).optional(),
+    sequence: z.number('must be a whole number').int('must be a whole number').min(0, 'must not be negative').max(Number.MAX_SAFE_INTEGER, 'is too large').optional(),
   })
   .refine((value) => value.gravity !== undefined || value.inclination !== undefined, { error: 'gravity or inclination is required', path: ['gravity'] });
 export type TelemetryReading = z.infer<typeof reading>;
 
-/** RFC 8428 (SenML JSON), the records that a float sensor uses. */
-export const senmlRecord = z.object({
+/**
+ * RFC 8428 (SenML JSON), the records that a float sensor uses. Base values (bn,
+ * bt, bu, bv) hold for the records after them (section 4.1).
+ */
+export const senmlRecord = z.looseObject({
   bn: z.string().max(200).optional(),
   bt: z.number().optional(),
   bu: z.string().max(20).optional(),
+  bv: z.number().optional(),
+  bver: z.number().int().max(10, 'is a SenML version that is not known').optional(),
   n: z.string().max(200).optional(),
   u: z.string().max(20).optional(),
   v: z.number().optional(),
