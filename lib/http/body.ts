@@ -20,7 +20,8 @@ export async function readJson(request: Request, limit = BODY_LIMIT_BYTES): Prom
   }
 }
 
-async function readBytes(request: Request, limit: number): Promise<Uint8Array> {
+/** The body as it is, read no further than the limit. */
+export async function readBytes(request: Request, limit: number): Promise<Uint8Array> {
   const tooLarge = () => new RequestError('too-large', `The body may have at most ${limit} bytes.`);
   if (Number(request.headers.get('content-length') ?? 0) > limit) throw tooLarge();
   const parts: Uint8Array[] = [];

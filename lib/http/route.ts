@@ -107,7 +107,8 @@ export function fieldErrors(error: z.ZodError): FieldErrors {
   return fields;
 }
 
-async function inTime(work: Promise<Response>): Promise<Response> {
+/** Answers "not now" where the database stalls. */
+export async function inTime(work: Promise<Response>): Promise<Response> {
   let timer: NodeJS.Timeout | undefined;
   const late = new Promise<never>((_, reject) => {
     timer = setTimeout(() => reject(new UnavailableError('The database takes too long right now. Look whether the change was kept before you try again.')), DEADLINE_MS);
