@@ -13,7 +13,7 @@ import { useGlance } from './use-glance';
 export function CellarShell({ children }: { children: ReactNode }) {
   const live = useLiveChanges();
   const glance = useGlance();
-  const { counts } = useAlerts({ state: 'open', limit: 1 });
+  const { counts } = useAlerts({ state: 'open', limit: 100 });
   const places = placesFor(glance.may, counts?.open ?? 0);
   return (
     <>

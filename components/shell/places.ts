@@ -1,6 +1,6 @@
 import type { ComponentType } from 'react';
 import { FlagIcon, FloatIcon, LinesIcon, ShelfIcon } from '@/components/ui/icons';
-import type { Action } from '@/lib/contracts/actions';
+import type { Action } from '@/lib/core/actions';
 
 /** A page of the main navigation. */
 export interface Place {

@@ -1,6 +1,6 @@
 'use client';
 
-import type { Action } from '@/lib/contracts/actions';
+import type { Action } from '@/lib/core/actions';
 import { useBatches } from '@/lib/client/batches';
 import { useMe } from '@/lib/client/me';
 

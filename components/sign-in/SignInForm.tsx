@@ -1,7 +1,7 @@
 'use client';
 
 import { useRouter } from 'next/navigation';
-import { useEffect, useState, type FormEvent } from 'react';
+import { useState, useSyncExternalStore, type FormEvent } from 'react';
 import { Box } from '@/components/ui/Box';
 import { Button } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
@@ -26,16 +26,17 @@ function sentenceFor(refusal: Refusal): string {
   }
 }
 
+const never = () => () => undefined;
+
 /** Mail address and passphrase; both are checked here for form only, the server decides. */
 export function SignInForm({ to }: { to: string }) {
   const router = useRouter();
   const [stay, setStay] = useState(true);
   const [busy, setBusy] = useState(false);
-  const [ready, setReady] = useState(false);
   const [errors, setErrors] = useState<{ email?: string; password?: string }>({});
   const [refusal, setRefusal] = useState<Refusal | null>(null);
-  // Before the page has taken over, a submit would put the passphrase into the address.
-  useEffect(() => setReady(true), []);
+  // Before the page has taken over, a submit would leave it with the passphrase.
+  const ready = useSyncExternalStore(never, () => true, () => false);
 
   async function submit(event: FormEvent<HTMLFormElement>) {
     event.preventDefault();

@@ -1,0 +1,85 @@
+'use client';
+
+import { useState } from 'react';
+import { Button, LinkButton } from '@/components/ui/Button';
+import { Sentence } from '@/components/ui/Sentence';
+import { State } from '@/components/ui/StateMark';
+import { acknowledgeAlert } from '@/lib/client/alerts';
+import { ClientError } from '@/lib/client/fetcher';
+import type { LaneView } from './lanes';
+
+/** At most one: take it while nobody has it, else go and look. */
+export function LaneButton({ view, mayTake }: { view: LaneView; mayTake: boolean }) {
+  const [busy, setBusy] = useState(false);
+  const [failed, setFailed] = useState<string | null>(null);
+  const { openAlert, attention, lane } = view;
+  if (attention.group !== 'now') return null;
+  if (!openAlert || !mayTake) {
+    return (
+      <LinkButton href={`/batches/${lane.id}`} size="lane" className="relative z-10" aria-label={`Look at ${lane.name}`}>
+        Look
+      </LinkButton>
+    );
+  }
+  const take = async () => {
+    setBusy(true);
+    setFailed(null);
+    try {
+      await acknowledgeAlert(openAlert.id);
+    } catch (error) {
+      setFailed(error instanceof ClientError ? error.message : 'It was not taken. Try again.');
+    } finally {
+      setBusy(false);
+    }
+  };
+  return (
+    <span className="relative z-10 flex flex-col items-end gap-1">
+      {failed && (
+        <span role="alert" className="type-label max-w-48 text-right text-madder">
+          {failed}
+        </span>
+      )}
+      <Button size="lane" look={attention.state === 'Now' || attention.state === 'Stop' ? 'first' : 'plain'} disabled={busy} onClick={() => void take()} aria-label={`I have it: ${lane.name}`}>
+        I have it
+      </Button>
+    </span>
+  );
+}
+
+const VERDICT = { now: 'type-verdict-now', next: 'type-verdict', leave: 'type-verdict-leave' } as const;
+
+/** The call of a lane: state, when, verdict, reason, at most one button. */
+export function LaneCall({ view, mayTake }: { view: LaneView; mayTake: boolean }) {
+  const { attention, headline, reason } = view;
+  const low = attention.group === 'leave';
+  return (
+    <div className={`flex min-w-0 flex-col ${low ? 'py-[5px]' : 'pb-2 pt-[7px]'}`}>
+      <div className="flex items-baseline justify-between gap-3">
+        <span aria-hidden>
+          <State state={attention.state} />
+        </span>
+        <span className="type-label text-right text-ink2">{view.when}</span>
+      </div>
+      {low ? (
+        <p className="two-lines type-verdict-leave">
+          <Sentence strong>{headline}</Sentence>{' '}
+          <span className="type-reason text-ink2">
+            <Sentence>{reason}</Sentence>
+          </span>
+        </p>
+      ) : (
+        <>
+          <p className={VERDICT[attention.group]}>
+            <Sentence strong>{headline}</Sentence>
+          </p>
+          <div className="flex min-h-9 items-end justify-between gap-5">
+            <p className="two-lines type-reason self-start text-ink2">
+              <Sentence>{reason}</Sentence>
+            </p>
+            <LaneButton view={view} mayTake={mayTake} />
+          </div>
+        </>
+      )}
+    </div>
+  );
+}

@@ -1,0 +1,35 @@
+import type { Calendar } from '@/components/charts/calendar';
+import type { Span } from '@/components/charts/picture';
+
+/** The shared calendar's days: weekends tinted, today an ink block. The lanes below continue its weekends. */
+export function ShelfAxis({ calendar, span, now }: { calendar: Calendar; span: Span; now: number }) {
+  const share = (at: number) => ((at - span.from) / (span.to - span.from)) * 100;
+  return (
+    <div aria-hidden className="relative h-full overflow-hidden font-mono text-[0.75rem] leading-[0.8125rem]">
+      {calendar.weekends.map((weekend) => (
+        <span key={weekend.from} className="absolute inset-y-0 -bottom-px bg-well" style={{ left: `${share(weekend.from)}%`, width: `${share(weekend.to) - share(weekend.from)}%` }} />
+      ))}
+      {calendar.labels.map((label) => {
+        const left = share(label.from);
+        const width = share(label.to) - left;
+        // Of a day that is mostly outside, the figure would hang over the edge.
+        if (left < -width / 2 || left + width > 100 + width / 2) return null;
+        const today = label.today && label.from <= now;
+        return (
+          <span
+            key={label.from}
+            className={`absolute flex flex-col items-center justify-end whitespace-nowrap pb-[3px] ${today ? 'inset-x-0 bottom-0 top-[2px] bg-ink text-on' : 'inset-y-0 text-ink2'}`}
+            style={{ left: `${left}%`, width: `${width}%`, right: 'auto' }}
+          >
+            <span className={today ? '' : label.top.length > 1 && label.strong && !/^[A-Z]$/.test(label.top) ? 'font-bold text-ink' : 'text-ink3'} style={{ fontWeight: today || label.top.length > 1 ? 600 : 500 }}>
+              {label.top || ' '}
+            </span>
+            <span className={today || label.strong ? 'text-[0.8125rem]' : ''} style={{ fontWeight: today || (label.strong && !today) ? 700 : 500, color: today ? undefined : label.strong ? 'var(--ink)' : undefined }}>
+              {label.bottom}
+            </span>
+          </span>
+        );
+      })}
+    </div>
+  );
+}
