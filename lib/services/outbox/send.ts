@@ -11,8 +11,6 @@ import { nextTry } from './retry';
 
 const log = logFor('outbox');
 
-/** Longer than one mail can take, so that a lease ends only when its sender died. */
-export const LEASE_MS = 180_000;
 /** More than this in one mail nobody reads; the rest comes in the next. */
 const MOST_IN_ONE_MAIL = 50;
 
@@ -23,6 +21,8 @@ export interface SendDeps {
   publicUrl: string;
   /** The part behind the @ of message identifiers. */
   messageHost: string;
+  /** How long a mail is taken for: longer than one can take, so that a lease ends only when its sender died, ms. */
+  leaseMs: number;
   /** 0 to 1, for spreading the waits. */
   random?: () => number;
   /** True: stop after the mail in hand. */
@@ -45,7 +45,7 @@ export async function sendDue(deps: SendDeps): Promise<SendResult> {
   let mails = 0;
   while (!deps.stopping?.()) {
     const now = clock.now();
-    const claimed = await claimForOnePerson(new Date(now), new Date(now + LEASE_MS), MOST_IN_ONE_MAIL);
+    const claimed = await claimForOnePerson(new Date(now), new Date(now + deps.leaseMs), MOST_IN_ONE_MAIL);
     if (claimed.length === 0) break;
     const outcome = await sendToOne(claimed, deps, clock);
     if (outcome === 'sent') mails += 1;

@@ -1,0 +1,52 @@
+import { smtpTransport } from '@/lib/services/outbox/transport';
+import { env } from '@/lib/config/env';
+import { logFor } from '@/lib/log';
+import { dropWhatIsOld } from '@/lib/services/housekeeping';
+import { startHeartbeat } from '../heartbeat';
+import { keepPartitionsAhead } from '../keep-partitions';
+import { startAssessing } from './assessing';
+import { startSending } from './sending';
+
+const log = logFor('worker');
+const HOUSEKEEPING_MS = 3_600_000;
+
+export interface WorkerOptions {
+  /** A batch is judged at most this often after new readings, ms. */
+  spacingMs: number;
+  /** All working batches are judged at least this often, ms. */
+  tickMs: number;
+  /** One mail may take this long, ms. */
+  sendTimeoutMs: number;
+}
+
+/** Once a minute each, and all of them every minute. */
+export const USUAL: WorkerOptions = { spacingMs: 60_000, tickMs: 60_000, sendTimeoutMs: 30_000 };
+
+/** The domain that sends, for message identifiers. */
+const domainOf = (from: string) => /@([^\s>@]+)>?\s*$/.exec(from)?.[1] ?? 'fallbright.example';
+
+/** Starts every part of the worker; returns what stops it, the work in hand first. */
+export function startWorker({ spacingMs, tickMs, sendTimeoutMs }: WorkerOptions = USUAL): { stop(): Promise<void> } {
+  const { SMTP_URL, MAIL_FROM, PUBLIC_URL } = env();
+  const sending = startSending({
+    transport: smtpTransport({ url: SMTP_URL, from: MAIL_FROM, sendTimeoutMs, connectTimeoutMs: Math.min(10_000, sendTimeoutMs) }),
+    publicUrl: PUBLIC_URL,
+    messageHost: domainOf(MAIL_FROM),
+    leaseMs: sendTimeoutMs * 1.5,
+  });
+  const assessing = startAssessing({ spacingMs, tickMs, onJudged: () => sending.wake() });
+  const stopHeartbeat = startHeartbeat('worker', () => ({ ...assessing.figures(), ...sending.figures() }));
+  const stopPartitions = keepPartitionsAhead();
+  const tidy = () => void dropWhatIsOld().catch((error: unknown) => log.warn({ err: error }, 'old rows could not be dropped; tried again in an hour'));
+  tidy();
+  const tidying = setInterval(tidy, HOUSEKEEPING_MS);
+
+  return {
+    stop: async () => {
+      clearInterval(tidying);
+      stopPartitions();
+      await Promise.all([assessing.stop(), sending.stop()]);
+      stopHeartbeat();
+    },
+  };
+}
