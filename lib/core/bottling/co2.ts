@@ -108,6 +108,8 @@ export function drinkPressure(volumes: number, celsius: number, drink: DrinkForG
   if (!(celsius >= 0 && celsius <= 40)) throw new RangeError('pressure is reckoned from 0 to 40 °C');
   if (!(volumes >= 0)) throw new RangeError('volumes of gas must not be negative');
   const { abvPercent, sugarGPerL } = drink;
+  if (!(abvPercent >= 0 && abvPercent <= 30)) throw new RangeError('pressure is reckoned from 0 to 30 % vol');
+  if (!(sugarGPerL >= 0 && sugarGPerL <= 400)) throw new RangeError('pressure is reckoned from 0 to 400 g/L of sugar');
   const inputs = [
     ['gas', volumes, 'volumes'],
     ['temperature', celsius, '°C'],
