@@ -52,6 +52,8 @@ class Run {
   private knownEvents: BatchEvent[] = [];
   private last = Number.NEGATIVE_INFINITY;
   private readonly late: boolean;
+  /** Error of the sensor's clock that the known readings show, ms. */
+  private clockError = 0;
 
   constructor(
     private readonly setup: BatchSetup,
@@ -92,6 +94,10 @@ class Run {
     let known = this.all;
     if (this.late) {
       known = this.all.filter((reading) => (reading.receivedAt ?? reading.at) <= at);
+      const error = clockErrorOf(known);
+      if (error !== this.clockError) anew = true;
+      this.clockError = error;
+      if (error !== 0) known = known.map((reading) => ({ ...reading, at: reading.at + error }));
       if (!anew && known.some((reading) => (reading.receivedAt ?? reading.at) > this.last && reading.at < behind)) anew = true;
     }
     if (anew || events.length !== this.knownEvents.length || this.late) {
@@ -102,6 +108,23 @@ class Run {
     } else this.known = known;
     this.last = at;
   }
+}
+
+/** Least lag between measuring and receiving that still counts as a wrong clock. */
+const CLOCK_MS = 30 * 60_000;
+
+/**
+ * How far the sensor's clock is behind, ms: when even the quickest readings (5 %)
+ * arrive more than half an hour after their time, or before it, the clock is
+ * wrong. Rounded to 10 min, so that it stays put.
+ */
+function clockErrorOf(known: readonly Reading[]): number {
+  const lags: number[] = [];
+  for (const reading of known) if (reading.receivedAt != null) lags.push(reading.receivedAt - reading.at);
+  if (lags.length < 12) return 0;
+  lags.sort((a, b) => a - b);
+  const quick = lags[Math.floor(0.05 * lags.length)]!;
+  return Math.abs(quick) > CLOCK_MS ? Math.round(quick / 600_000) * 600_000 : 0;
 }
 
 function stageOf(watch: Watch): Stage {

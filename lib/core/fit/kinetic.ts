@@ -11,7 +11,8 @@
  *   (Kr/D) ln(S/(D + δS)) + ln(D + δS)/δ = −k A(τ),  D = 1 − δ,  A = ∫a dτ
  *
  * by Newton's method in ln S. Parameters, in this order: OG and FG in points,
- * ln k, ln m, ln Kr, logit δ.
+ * ln κ, ln m, ln Kr, logit δ, where κ = k/(1 + Kr) is the pace of a full must a
+ * day: unlike k it hardly hangs together with Kr.
  */
 export const KINETIC_PARAMETERS = 6;
 
@@ -33,9 +34,9 @@ export class KineticCurve {
   constructor(parameters: ArrayLike<number>) {
     this.og = parameters[0]!;
     this.fg = parameters[1]!;
-    this.k = Math.exp(parameters[2]!);
     this.m = Math.exp(parameters[3]!);
     this.kr = Math.exp(parameters[4]!);
+    this.k = Math.exp(parameters[2]!) * (1 + this.kr);
     this.delta = logistic(parameters[5]!);
     this.w = 0.18 * this.m + 0.02;
     this.base = softplus(-this.m / this.w);
@@ -122,7 +123,7 @@ export class KineticCurve {
     const byDelta = (kr / (d * d)) * (x - l) - (kr / d) * lByDelta + lByDelta / delta - l / (delta * delta);
     out[at + 2 * stride] = f * k * w * rise;
     out[at + 3 * stride] = f * k * m * byM;
-    out[at + 4 * stride] = f * (kr / d) * (x - l);
+    out[at + 4 * stride] = f * ((kr / d) * (x - l) + (k * w * rise * kr) / (1 + kr));
     out[at + 5 * stride] = f * byDelta * delta * d;
     return this.fg + drop * s;
   }

@@ -15,12 +15,12 @@ const USUAL_ATTENUATION: Record<DrinkKind, { min: number; max: number }> = {
   wine: { min: 0.96, max: 1.12 },
 };
 
-/** Priors of ln k, ln m, ln Kr, logit δ of the kinetic curve by kind (our own, from simulated batches, widened). */
+/** Priors of ln κ, ln m, ln Kr, logit δ of the kinetic curve by kind (our own, pooled over simulated batches of two families of models). */
 const KINETICS: Record<DrinkKind, readonly [Normal, Normal, Normal, Normal]> = {
-  beer: [n(-0.8, 0.7), n(-0.45, 0.5), n(-1.7, 0.8), n(-0.9, 1.2)],
-  cider: [n(-0.9, 0.7), n(0.1, 0.5), n(-1.2, 1.0), n(-0.9, 1.7)],
-  mead: [n(-0.8, 0.8), n(0.1, 0.5), n(-1.0, 1.5), n(-0.3, 2.0)],
-  wine: [n(-0.6, 0.7), n(0.1, 0.5), n(-1.3, 1.5), n(0.3, 2.0)],
+  beer: [n(-0.6, 0.7), n(-0.45, 0.5), n(-1.9, 0.9), n(-0.5, 1.4)],
+  cider: [n(-1.3, 0.7), n(0.35, 0.5), n(-1.1, 1.2), n(-1.2, 2.0)],
+  mead: [n(-1.2, 0.7), n(0.35, 0.5), n(-0.4, 1.5), n(-0.3, 2.2)],
+  wine: [n(-1.1, 0.7), n(0.35, 0.5), n(-0.7, 1.6), n(0.1, 2.4)],
 };
 
 /** Onset after an addition: the yeast is there already. */

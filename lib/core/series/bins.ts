@@ -14,7 +14,7 @@ export interface Bins {
   g: Float64Array;
   /** Median temperature, °C; NaN where none was sent. */
   temperature: Float64Array;
-  /** Mean size of the change from one reading to the next, points; NaN where there was none. */
+  /** Noise between readings, points: mean size of their second differences, so that a steady fall counts nothing; NaN where there was none. */
   flicker: Float64Array;
   count: Int32Array;
   /** 1 where the data must not enter fits or slopes (frozen float). */
@@ -109,7 +109,10 @@ export function newBins(): Bins {
 
 const scratch = new Float64Array(4096);
 
-/** Puts readings[from..to), all of one hour, into the next bin. `previous` is the reading before them. */
+/** Mean absolute second difference of white noise over its standard deviation: √6 · √(2/π). */
+const BEND_TO_SD = Math.sqrt(6) * Math.sqrt(2 / Math.PI);
+
+/** Puts readings[from..to), all of one hour, into the next bin; the two readings before them are looked up. */
 export function appendBin(
   bins: Bins,
   readings: readonly Reading[],
@@ -117,24 +120,30 @@ export function appendBin(
   to: number,
   hour: number,
   origin: number,
-  previous: Reading | null,
 ): void {
   widen(bins);
+  const previous = readings[from - 1] ?? null;
+  const earlier = readings[from - 2] ?? null;
   const i = bins.n;
   const n = Math.min(to - from, scratch.length);
   for (let j = 0; j < n; j += 1) scratch[j] = (readings[from + j]!.gravity - 1) * 1000;
-  let changes = 0;
+  let bends = 0;
   let total = 0;
-  let last = previous && (readings[from]!.at - previous.at) <= 4 * HOUR_MS ? (previous.gravity - 1) * 1000 : Number.NaN;
+  let before = earlier ? (earlier.gravity - 1) * 1000 : Number.NaN;
+  let last = previous ? (previous.gravity - 1) * 1000 : Number.NaN;
+  if (previous && readings[from]!.at - previous.at > 4 * HOUR_MS) last = Number.NaN;
+  if (previous && earlier && previous.at - earlier.at > 4 * HOUR_MS) before = Number.NaN;
   for (let j = 0; j < n; j += 1) {
     const value = scratch[j]!;
-    if (last === last) {
-      total += value > last ? value - last : last - value;
-      changes += 1;
+    const bend = value - 2 * last + before;
+    if (bend === bend) {
+      total += bend < 0 ? -bend : bend;
+      bends += 1;
     }
+    before = last;
     last = value;
   }
-  bins.flicker[i] = changes > 0 ? total / changes : Number.NaN;
+  bins.flicker[i] = bends > 0 ? total / bends / BEND_TO_SD : Number.NaN;
   const gravity = medianInPlace(scratch, 0, n);
   bins.raw[i] = gravity;
   bins.g[i] = gravity;

@@ -75,23 +75,14 @@ export class Track {
       const hour = Math.floor(this.hourOf(readings[from]!.at));
       let to = from + 1;
       while (to < readings.length && readings[to]!.at < until && Math.floor(this.hourOf(readings[to]!.at)) === hour) to += 1;
-      const previous = from > 0 ? readings[from - 1]! : null;
       const { bins } = this;
-      appendBin(bins, readings, from, to, hour, this.origin, previous);
+      appendBin(bins, readings, from, to, hour, this.origin);
       const i = bins.n - 1;
       bins.g[i] = bins.raw[i]! - this.pendingShift;
       this.age(i);
       this.taken = to;
     }
     this.measureSpacing();
-  }
-
-  /** Takes the newest bin out again, so that an unfinished hour can be completed later. */
-  dropUnfinished(): void {
-    const { bins } = this;
-    if (bins.n === 0) return;
-    bins.n -= 1;
-    this.taken -= bins.count[bins.n]!;
   }
 
   private age(i: number): void {
@@ -252,14 +243,15 @@ export class Track {
   }
 
   /**
-   * Looks for an unlogged step between `hour` - 19 and `hour` - 16: robust lines
-   * of the 16 h before and the 16 h after must part by more than 2.2 points, four
-   * standard errors and three tenths of the change of slope.
+   * Looks for an unlogged step between `hour` - 23 and `hour` - 20. Robust lines of
+   * the 16 h before and after, and again of the 24 h before and the 20 h after (a
+   * burst of bubbles spoils one pair, hardly both), must part by more than 2.2
+   * points, four standard errors and three tenths of the change of slope.
    */
   findStep(hour: number, notBefore: number): { hour: number; points: number } | null {
     const { bins } = this;
-    const first = binFrom(bins, hour - 19);
-    const last = binFrom(bins, hour - 16);
+    const first = binFrom(bins, hour - 23);
+    const last = binFrom(bins, hour - 20);
     let best = -1;
     let widest = 1.5;
     for (let i = Math.max(first, 3); i < last && i + 2 < bins.n; i += 1) {
@@ -274,22 +266,31 @@ export class Track {
       }
     }
     if (best < 0) return null;
-    const at = bins.hour[best]!;
-    const before = this.line(at - 16, at, 0.6);
-    const after = this.line(at, at + 16, 0.6);
+    const near = this.jumpAt(best, 16, 16);
+    const wide = this.jumpAt(best, 24, 20);
+    if (near === null || wide === null || near * wide < 0) return null;
+    return { hour: bins.hour[best]!, points: Math.abs(near) < Math.abs(wide) ? near : wide };
+  }
+
+  /** Step just before bin i as the parting of two robust lines; null when it is within their doubt. */
+  private jumpAt(i: number, hoursBefore: number, hoursAfter: number): number | null {
+    const { bins } = this;
+    const at = bins.hour[i]!;
+    const before = this.line(at - hoursBefore, at, 0.6);
+    const after = this.line(at, at + hoursAfter, 0.6);
     if (!before || !after) return null;
-    const edge = (bins.t[best]! + bins.t[best - 1]!) / 2;
+    const edge = (bins.t[i]! + bins.t[i - 1]!) / 2;
     const levelBefore = before.level + (before.slope / 24) * (edge - before.middle);
     const levelAfter = after.level + (after.slope / 24) * (edge - after.middle);
     const points = levelAfter - levelBefore;
     const se = Math.hypot(before.se, after.se) / 3;
-    const limit = Math.max(2.2, 4 * se, 0.3 * Math.abs(after.slope - before.slope));
-    return Math.abs(points) > limit ? { hour: at, points } : null;
+    const limit = Math.max(2.2, 4 * se, 0.3 * Math.abs(after.slope - before.slope), 0.12 * Math.abs(before.slope));
+    return Math.abs(points) > limit ? points : null;
   }
 
   // Frozen float.
 
-  /** Noise index at an hour: trimmed mean of the reading-to-reading change, as a standard deviation in points; null with too little data. */
+  /** Noise index at an hour: trimmed mean of the noise of its last hours, points; null with too little data. */
   noiseIndex(hour: number): number | null {
     const { bins } = this;
     const span = this.spacing < 0.75 ? 8 : this.spacing < 1.5 ? 14 : 24;
@@ -307,7 +308,7 @@ export class Track {
     const kept = Math.max(1, Math.floor(0.85 * n));
     let sum = 0;
     for (let i = 0; i < kept; i += 1) sum += values[i]!;
-    return sum / kept / (0.6057 * Math.SQRT2);
+    return sum / kept;
   }
 
   /** Smallest change that the float can show, points: a coarse float looks frozen when it is only coarse. */
@@ -337,5 +338,3 @@ export function handReadings(events: readonly BatchEvent[]): { at: Instant; grav
     (event.kind === 'reading' || event.kind === 'note') && event.gravity ? [{ at: event.at, gravity: event.gravity }] : [],
   );
 }
-
-export { median };

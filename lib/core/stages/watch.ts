@@ -56,9 +56,10 @@ export class Watch {
   stuckCold = false;
   frozen: FrozenState | null = null;
 
-  /** Highest 12 h rate so far in this segment, points a day, and its standard error. */
+  /** Highest rate over a day so far in this segment, points a day. */
   maxRate = 0;
-  maxRateSe = 0;
+  /** Highest rate over each window that the peak is sought in. */
+  private maxRates = new Map<number, { rate: number; se: number }>();
   maxFittedRate = 0;
   baseline: number | null = null;
   /** Level on which the batch came to rest, points. */
@@ -133,7 +134,7 @@ export class Watch {
   /** Highest gravity at which the batch may be done, points. */
   zoneTop(): number {
     const prior = this.fgPrior();
-    return prior.mean + Math.max(1.28 * prior.sd, 2);
+    return prior.mean + Math.max(1.5 * Math.hypot(prior.sd, this.track.calibrationSd(prior.mean)), 2.5);
   }
 
   /** The fitted curve; anew every 6 h to day 10, every 12 h to day 30, then once a day. */
@@ -270,7 +271,7 @@ export class Watch {
     this.segment = { from: hour, effectiveOg, ogSd: Math.hypot(this.segment.ogSd, 1), level, fruit: fruit || this.segment.fruit, restarted: true };
     this.plateau = sweetened ? level : null;
     this.maxRate = 0;
-    this.maxRateSe = 0;
+    this.maxRates.clear();
     this.maxFittedRate = 0;
     this.fitCache = null;
     this.lastFit = null;
@@ -340,7 +341,7 @@ export class Watch {
       }
       return;
     }
-    if (usual !== null && this.track.resolution() < 0.6 * usual && index < limit * usual) {
+    if (usual !== null && usual > 0.1 && this.track.resolution() < 0.6 * usual && index < limit * usual) {
       this.frozenLooks += 1;
       if (this.frozenLooks >= 2 || index < 0.12 * usual) {
         const span = this.track.spacing < 0.75 ? 8 : 14;
@@ -400,20 +401,22 @@ export class Watch {
     // A float put in late, or silent at first, may find the fall well on its way.
     const late = this.og !== null && this.ogTold && this.og - now > (first > 12 ? 5 : 8);
     const falling = line !== null && line.slope + 0.8 * line.se < 0;
-    hold(this.started, hour, (fall > limit && falling) || late, 2, false);
+    hold(this.started, hour, (fall > limit && falling) || late, fall > Math.max(5, 5 * this.noise) ? 1 : 2, false);
     hold(this.overdue, hour, hour >= OVERDUE_H[this.setup.kind] && fall < 2.5 && !this.started.on, 1, this.started.on);
   }
 
   private judgePeak(hour: number): void {
     if (this.peaked.on) return;
-    const line = this.line(12);
-    if (!line) return;
-    const rate = -line.slope;
-    if (rate > this.maxRate && line.se < Math.max(1.5, 0.25 * rate)) {
-      this.maxRate = rate;
-      this.maxRateSe = line.se;
+    let below = false;
+    for (const window of [12, 18, 24, 36]) {
+      const line = this.line(window);
+      if (!line) continue;
+      const rate = -line.slope;
+      const most = this.maxRates.get(window);
+      if (rate > 1 && (!most || rate > most.rate)) this.maxRates.set(window, { rate, se: line.se });
+      else if (most && rate < 0.87 * most.rate && most.rate - rate > 2 * Math.hypot(line.se, most.se)) below = true;
+      if (window === 24 && rate > this.maxRate) this.maxRate = rate;
     }
-    const below = rate < 0.87 * this.maxRate && this.maxRate - rate > 1.3 * Math.hypot(line.se, this.maxRateSe);
     let fitted = false;
     const fit = Math.floor(hour) % 12 === 0 ? this.fit() : null;
     if (fit) {
@@ -430,12 +433,17 @@ export class Watch {
   }
 
   private judgeAirlock(hour: number): void {
-    const line = this.line(12) ?? this.line(24);
-    if (!line) return;
+    // Any window bounds the present rate from above while it falls; the sharpest one wins.
+    let upper = Number.POSITIVE_INFINITY;
+    let lower = Number.NEGATIVE_INFINITY;
+    for (const window of [12, 18, 24]) {
+      const line = this.line(window);
+      if (!line) continue;
+      upper = Math.min(upper, gasLPerH(-line.slope + 1.64 * line.se, this.setup.volumeL));
+      if (window === 12 || lower === Number.NEGATIVE_INFINITY) lower = gasLPerH(-line.slope - 1.64 * line.se, this.setup.volumeL);
+    }
     const limit = this.swapGas();
-    const upper = gasLPerH(-line.slope + 1.64 * line.se, this.setup.volumeL);
-    const lower = gasLPerH(-line.slope - 1.64 * line.se, this.setup.volumeL);
-    hold(this.airlock, hour, this.peaked.on && upper < limit, 4, lower > 1.3 * limit);
+    hold(this.airlock, hour, this.peaked.on && upper < limit, 3, lower > 1.3 * limit);
   }
 
   private judgeEnd(hour: number): void {
@@ -482,7 +490,7 @@ export class Watch {
     const level = this.levelNow();
     if (level === null) return;
     const prior = this.fgPrior();
-    const limit = prior.mean + Math.max(1.28 * prior.sd, 2) + 2;
+    const limit = this.zoneTop() + 1.5;
     const line48 = this.line(48);
     const line72 = this.line(72);
     const slow = (line: Line | null, rate: number, upper: number): boolean =>
@@ -517,14 +525,17 @@ export class Watch {
     const level = this.levelNow();
     if (level === null) return;
     if (level > this.plateau && !this.sweetened) this.plateau = level;
+    // A batch that was sweetened may well work again; any other falls for good reason only when it is plain.
+    const drop = this.sweetened ? 1.5 : 2.5;
+    const pace = this.sweetened ? 0.25 : 0.5;
     const falls = [24, 48].some((window) => {
       const line = this.line(window);
-      return line !== null && line.slope + 2 * line.se < -0.25;
+      return line !== null && line.slope + 2 * line.se < -pace;
     });
     const line48 = this.line(48);
     const still = line48 !== null && -line48.slope + line48.se < 0.3 && Math.abs(line48.slope) < 0.15;
     const wasOn = this.refermenting.on;
-    hold(this.refermenting, hour, level < this.plateau - 1.5 && falls && !this.stabilised, 3, still || this.stabilised);
+    hold(this.refermenting, hour, level < this.plateau - drop && falls && !this.stabilised, 3, still || this.stabilised);
     if (wasOn && !this.refermenting.on) this.plateau = level;
   }
 
