@@ -1,0 +1,96 @@
+import Link from 'next/link';
+import { BackIcon } from '@/components/ui/icons';
+import { Button } from '@/components/ui/Button';
+import { Vessel } from '@/components/vessel/Vessel';
+import type { VesselState } from '@/components/vessel/describe';
+import type { BatchBody } from '@/lib/contracts/batches';
+import type { Fact } from './facts';
+import { placeWords } from './words';
+
+export interface HeadActions {
+  onRead: (() => void) | null;
+  onAdd: (() => void) | null;
+  onSetup: (() => void) | null;
+}
+
+function Facts({ facts, phone }: { facts: readonly Fact[]; phone: boolean }) {
+  const shown = phone ? facts.filter((fact) => fact.phone) : facts;
+  const names: Record<string, string> = phone ? { 'original gravity': 'pitched at', attenuation: 'fallen', 'strength so far': 'strength' } : {};
+  const order = phone ? ['now', 'attenuation', 'strength so far', 'original gravity'] : shown.map((fact) => fact.name);
+  const ordered = order.flatMap((name) => shown.find((fact) => fact.name === name) ?? []);
+  return (
+    <dl className={phone ? 'grid grid-cols-4 border-b' : 'mt-[14px] flex flex-wrap border-t'}>
+      {ordered.map((fact, index) => (
+        <div key={fact.name} className={phone ? `border-rule py-2 ${index === 0 ? 'pl-(--margin)' : 'border-l pl-2'}` : `flex-auto py-2 pr-3 ${index === 0 ? '' : 'border-l pl-3'}`}>
+          <dt className="type-label truncate text-[0.71875rem] text-ink2">{names[fact.name] ?? fact.name}</dt>
+          <dd className="whitespace-nowrap font-mono text-[0.96875rem] font-semibold leading-5">
+            {fact.figure}
+            {fact.more && !phone && <span className="type-label pl-1.5 text-ink2">{fact.more}</span>}
+          </dd>
+        </div>
+      ))}
+    </dl>
+  );
+}
+
+/** The batch's name, its vessel, what can be done, and one ruled line of facts. */
+export function BatchHead({ batch, vessel, facts, actions }: { batch: BatchBody; vessel: VesselState; facts: readonly Fact[]; actions: HeadActions }) {
+  return (
+    <header className="hidden border-b pl-3 pr-(--margin) strip:flex">
+      <div className="w-[142px] shrink-0 py-3">
+        <Vessel vessel={vessel} height={132} />
+      </div>
+      <div className="min-w-0 flex-1 pb-4 pt-3">
+        <div className="flex flex-wrap items-center gap-x-4 gap-y-2">
+          <h1 className="type-title min-w-0 break-words">{batch.name}</h1>
+          <p className="type-label text-ink2">
+            {placeWords(batch)}
+            {batch.state === 'ended' && ', ended'}
+          </p>
+          <div className="ml-auto flex flex-wrap gap-2">
+            {actions.onRead && <Button onClick={actions.onRead}>Read by hand</Button>}
+            {actions.onAdd && <Button onClick={actions.onAdd}>Add</Button>}
+            {actions.onSetup && (
+              <Button look="quiet" onClick={actions.onSetup}>
+                Set-up
+              </Button>
+            )}
+          </div>
+        </div>
+        <Facts facts={facts} phone={false} />
+      </div>
+    </header>
+  );
+}
+
+/** On a phone: the way back and the name, before the decision. */
+export function PhoneHead({ batch, meta, onSetup }: { batch: BatchBody; meta: readonly string[]; onSetup: (() => void) | null }) {
+  return (
+    <header className="flex min-h-[46px] items-center gap-3 border-b-[1.5px] border-ink px-(--margin) py-1 strip:hidden">
+      <Link href="/shelf" className="type-label -ml-2 inline-flex min-h-11 items-center gap-1 px-2 text-ink2 no-underline">
+        <BackIcon size={11} /> Shelf
+      </Link>
+      <p className="type-sub min-w-0 flex-1 truncate" role="heading" aria-level={1}>
+        {batch.name}
+      </p>
+      <div className="type-label shrink-0 text-right text-ink2" style={{ lineHeight: '1rem' }}>
+        {meta.map((line) => (
+          <div key={line}>{line}</div>
+        ))}
+      </div>
+      {onSetup && (
+        <button type="button" className="type-label min-h-11 text-ink underline decoration-rule2 underline-offset-4" onClick={onSetup}>
+          Set-up
+        </button>
+      )}
+    </header>
+  );
+}
+
+export function PhoneFacts({ facts }: { facts: readonly Fact[] }) {
+  return (
+    <div className="strip:hidden">
+      <Facts facts={facts} phone />
+    </div>
+  );
+}

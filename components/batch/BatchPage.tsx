@@ -1,0 +1,186 @@
+'use client';
+
+import { useEffect, useMemo, useState } from 'react';
+import { pictureOf } from '@/components/charts/from-wire';
+import { wholeSpan, type Span } from '@/components/charts/picture';
+import { isWhole, within } from '@/components/charts/zoom';
+import { clock, when } from '@/components/charts/zone';
+import { Button, LinkButton } from '@/components/ui/Button';
+import { Haze } from '@/components/ui/Haze';
+import { usePageLayout } from '@/components/ui/layout';
+import { ErrorState } from '@/components/ui/Notice';
+import { useNow } from '@/components/ui/now';
+import { EmptyVessel } from '@/components/vessel/Vessel';
+import { vesselOf } from '@/components/vessel/describe';
+import { useBatch, useJudgement, useSeries, useVerdictChanges } from '@/lib/client/batches';
+import { useEntries } from '@/lib/client/entries';
+import { useMe } from '@/lib/client/me';
+import type { BatchBody } from '@/lib/contracts/batches';
+import { BatchHead, PhoneFacts, PhoneHead } from './BatchHead';
+import { Calls } from './Calls';
+import { callRows, type CallRow } from './calls';
+import { Decision, type DoneAct } from './Decision';
+import { EntryForm } from './EntryForm';
+import type { EntryDraft, EntryKind } from './entry-form';
+import { Evidence } from './Evidence';
+import { factsOf } from './facts';
+import { litres } from './figures';
+import { Log } from './Log';
+import { logRows } from './log';
+import { SetupForm } from './SetupForm';
+import { Sheet } from './Sheet';
+import { dayOf, STAGE_WORDS } from './words';
+
+/** Points asked for: about one for every two pixels of the chart. */
+const POINTS = 400;
+/** A pinch asks for its readings once it rests. */
+const SETTLE_MS = 250;
+
+function useSettled<T>(value: T): T {
+  const [settled, setSettled] = useState(value);
+  useEffect(() => {
+    const timer = setTimeout(() => setSettled(value), SETTLE_MS);
+    return () => clearTimeout(timer);
+  }, [value]);
+  return settled;
+}
+
+function Loading() {
+  return (
+    <div className="px-(--margin) py-4" aria-busy="true">
+      <div className="flex items-end gap-6">
+        <EmptyVessel height={132} />
+        <Haze height={48} className="max-w-[360px] flex-1" label="Loading the batch" />
+      </div>
+      <Haze height={336} className="mt-6" label="Loading its readings" />
+    </div>
+  );
+}
+
+export function BatchPage({ id }: { id: string }) {
+  const { batch, error, retry } = useBatch(id);
+  if (batch) return <Loaded batch={batch} />;
+  if (error?.status === 404) {
+    return (
+      <ErrorState title="There is no such batch here">
+        <p>It may be in another cellar, or it was taken away.</p>
+        <LinkButton href="/shelf" className="mt-2">
+          To the shelf
+        </LinkButton>
+      </ErrorState>
+    );
+  }
+  if (error) {
+    return (
+      <ErrorState title="The batch did not load" onRetry={retry}>
+        {error.message} Nothing logged is lost.
+      </ErrorState>
+    );
+  }
+  return <Loading />;
+}
+
+type Opened = { form: 'entry'; kind: EntryKind; neck?: EntryDraft['neck'] } | { form: 'setup' } | null;
+
+function Loaded({ batch }: { batch: BatchBody }) {
+  const { me, may } = useMe();
+  const timeZone = me?.cellar.time_zone ?? 'UTC';
+  const phone = usePageLayout() === 'strip';
+  const nowMs = useNow();
+  const now = Math.round((nowMs ?? Date.parse(batch.assessment?.at ?? batch.created_at)) / 1000);
+  const [chosen, setChosen] = useState<Span | null>(null);
+  const [opened, setOpened] = useState<Opened>(null);
+
+  const asked = useSettled(chosen);
+  const iso = (at: number) => new Date(at * 1000).toISOString();
+  const series = useSeries(batch.id, asked ? { from: iso(asked.from), to: iso(asked.to), points: POINTS } : { points: POINTS });
+  const { judgement, error: judgementError } = useJudgement(batch.id);
+  const { entries, error: entriesError } = useEntries(batch.id, { limit: 200 });
+  const { changes } = useVerdictChanges(batch.id);
+
+  const judged = judgement ?? batch.assessment;
+  const shown = useMemo(() => ({ ...batch, assessment: judged }), [batch, judged]);
+  const picture = useMemo(
+    () => pictureOf({ batch: shown, series: series.series, drawn: judgement, entries: entries ?? [] }, now, timeZone),
+    [shown, series.series, judgement, entries, now, timeZone],
+  );
+  const whole = useMemo(() => wholeSpan(picture, batch.pitched_at === null ? null : Date.parse(batch.pitched_at) / 1000), [picture, batch.pitched_at]);
+  const span = chosen ? within(chosen, whole) : whole;
+
+  const rows = useMemo(() => (judged ? callRows(batch, judged, now, timeZone) : []), [batch, judged, now, timeZone]);
+  const log = useMemo(() => logRows(entries ?? [], changes ?? []), [entries, changes]);
+  const facts = factsOf(shown, now, timeZone);
+  const racked = judged?.stage === 'terminal' && (entries ?? []).some((entry) => entry.kind === 'rack');
+  const vessel = vesselOf(shown, racked);
+
+  const working = batch.state === 'working';
+  const open = (kind: EntryKind, neck?: EntryDraft['neck']) => setOpened({ form: 'entry', kind, ...(neck === undefined ? {} : { neck }) });
+  const onRead = working && may('entries.create') ? () => open('reading') : null;
+  const actions = {
+    onRead,
+    onAdd: working && may('entries.create') ? () => open(may('entries.alter') ? 'addition' : 'observation') : null,
+    onSetup: may('batches.update') ? () => setOpened({ form: 'setup' }) : null,
+  };
+  const first = rows[0] ?? null;
+  const close = () => setOpened(null);
+  const trouble = [series.error, judgementError, entriesError].find((error) => error !== undefined);
+  const heard = batch.sensor?.last_heard_at ? Date.parse(batch.sensor.last_heard_at) / 1000 : null;
+  const day = dayOf(batch.pitched_at, now);
+
+  return (
+    <>
+      <PhoneHead batch={batch} onSetup={actions.onSetup} meta={[`${day === null ? 'not pitched' : `day ${day}`}, ${litres(batch.volume_l)}`, ...(heard === null ? [] : [`heard ${when(heard, now, timeZone)}`])]} />
+      <BatchHead batch={batch} vessel={vessel} facts={facts} actions={actions} />
+      {first && <Decision row={first} vessel={vessel} when={whenOf(first, judged, now, timeZone)} done={working ? doneAct(first, batch, open, may('entries.alter')) : null} onRead={onRead} mayTake={may('alerts.acknowledge')} />}
+      <PhoneFacts facts={facts} />
+      <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px]">
+        <div className="wide:col-start-1 wide:row-start-1">
+          <Evidence name={batch.name} picture={picture} span={span} whole={whole} onSpan={(next) => setChosen(isWhole(next, whole) ? null : next)} timeZone={timeZone} phone={phone} trouble={trouble ? `${trouble.message} Shown is what was known before.` : null} />
+        </div>
+        <div className="wide:col-start-2 wide:row-span-2 wide:row-start-1 wide:border-l">
+          {judged ? (
+            <Calls rows={rows} judgedAt={clock(Date.parse(judged.at) / 1000, timeZone)} mayTake={may('alerts.acknowledge')} />
+          ) : (
+            <p className="type-body px-(--margin) py-3 text-ink2">Not judged yet. {batch.pitched_at === null ? 'Log the pitch; the calls follow.' : `It is ${STAGE_WORDS.unknown} how it goes until the first readings are in.`}</p>
+          )}
+        </div>
+        <div className="wide:col-start-1 wide:row-start-2">
+          <Log batchId={batch.id} rows={log} now={now} timeZone={timeZone} onWrite={may('entries.create') ? () => open('observation') : null} />
+        </div>
+      </div>
+      {!working && (
+        <p className="type-label px-(--margin) pb-6 text-ink2">
+          Ended{batch.ended_at && ` ${when(Date.parse(batch.ended_at) / 1000, now, timeZone)}`}. {actions.onSetup && <Button size="lane" look="quiet" onClick={actions.onSetup}>Open it again</Button>}
+        </p>
+      )}
+      {opened?.form === 'entry' && (
+        <Sheet title={batch.name} onClose={close}>
+          <EntryForm batchId={batch.id} kind={opened.kind} neck={opened.neck} now={now} timeZone={timeZone} mayAlter={may('entries.alter')} onDone={close} />
+        </Sheet>
+      )}
+      {opened?.form === 'setup' && (
+        <Sheet title={`Set-up of ${batch.name}`} onClose={close}>
+          <SetupForm batch={batch} timeZone={timeZone} now={now} onDone={close} />
+        </Sheet>
+      )}
+    </>
+  );
+}
+
+/** `Thu 14:00` for what is due, `since Tue 07:30` for what is so. */
+function whenOf(row: CallRow, judged: BatchBody['assessment'], now: number, timeZone: string): string | null {
+  const call = judged?.calls[row.name];
+  if (!call) return null;
+  const at = (text: string) => when(Date.parse(text) / 1000, now, timeZone);
+  if (row.state === 'Due') return call.expected_at ? at(call.expected_at) : call.since && `since ${at(call.since)}`;
+  if (row.state === 'Leave be') return call.expected_at && `until ${at(call.expected_at)}`;
+  return call.since && `since ${at(call.since)}`;
+}
+
+/** The button that logs what the first call asks for. */
+function doneAct(row: CallRow, batch: BatchBody, open: (kind: EntryKind, neck?: EntryDraft['neck']) => void, mayAlter: boolean): DoneAct | null {
+  if (row.name === 'neck' && row.state === 'Due') return { word: 'Swapped', onDone: () => open('neck', 'airlock') };
+  if (row.name === 'neck' && (row.state === 'Now' || row.state === 'Stop') && batch.neck !== 'blow_off') return { word: 'Tube is on', onDone: () => open('neck', 'blow_off') };
+  if (row.name === 'rack' && row.state === 'Ready' && mayAlter) return { word: 'Racked', onDone: () => open('rack') };
+  return null;
+}

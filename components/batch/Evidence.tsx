@@ -1,0 +1,84 @@
+'use client';
+
+import { useMemo, useState } from 'react';
+import { FallChart } from '@/components/charts/FallChart';
+import { TwinTable } from '@/components/charts/TextTwin';
+import type { Picture, Span } from '@/components/charts/picture';
+import { twinOf } from '@/components/charts/twin';
+import { isWhole, zoomed } from '@/components/charts/zoom';
+import { ChartKey } from './ChartKey';
+import { cursorLine } from './cursor';
+
+interface EvidenceProps {
+  name: string;
+  picture: Picture;
+  span: Span;
+  whole: Span;
+  onSpan: (span: Span) => void;
+  timeZone: string;
+  phone: boolean;
+  /** In place of new readings: why they did not come. */
+  trouble: string | null;
+}
+
+const TOOL = 'type-label inline-flex h-11 min-w-11 items-center justify-center rounded border border-ink3 px-2 text-ink hover:bg-desk disabled:border-dashed disabled:text-ink3 strip:h-6 strip:min-w-6';
+
+/** The chart with its key, the line of figures under the cursor, zoom by buttons, and the same numbers as a table. */
+export function Evidence({ name, picture, span, whole, onSpan, timeZone, phone, trouble }: EvidenceProps) {
+  const [cursor, setCursor] = useState<number | null>(null);
+  const [table, setTable] = useState(false);
+  const twin = useMemo(() => twinOf(picture, name, timeZone, 60), [picture, name, timeZone]);
+  const line = cursorLine(picture, cursor, timeZone);
+  const all = isWhole(span, whole);
+  const middle = (span.from + span.to) / 2;
+  return (
+    <section aria-label="Evidence">
+      <div className="flex flex-wrap items-center gap-x-5 gap-y-1 px-(--margin) py-2 wide:pr-[14px]">
+        <div className="max-strip:hidden">
+          <ChartKey />
+        </div>
+        <p className="type-label ml-auto text-ink2 max-strip:ml-0">
+          <span className="font-bold text-ink">{line.time}</span> {line.figures}
+        </p>
+        <div className="flex gap-1 max-strip:hidden">
+          <Tools all={all} onIn={() => onSpan(zoomed(span, whole, 2, middle))} onOut={() => onSpan(zoomed(span, whole, 0.5, middle))} onAll={() => onSpan(whole)} />
+        </div>
+      </div>
+      {trouble && (
+        <p role="status" className="type-reason mx-(--margin) mb-1 border-l-[3px] border-ochre pl-3 text-ink2">
+          {trouble}
+        </p>
+      )}
+      <FallChart picture={picture} span={span} whole={whole} onSpan={onSpan} onCursor={setCursor} timeZone={timeZone} phone={phone} label={twin.sentence} />
+      <div className="flex items-center gap-2 border-b border-t px-(--margin) py-1.5">
+        <button type="button" aria-expanded={table} className="type-label min-h-11 text-ink underline decoration-rule2 underline-offset-4 strip:min-h-6" onClick={() => setTable(!table)}>
+          {table ? 'Put the table away' : 'The same numbers as a table'}
+        </button>
+        <div className="ml-auto flex gap-1 strip:hidden">
+          <Tools all={all} onIn={() => onSpan(zoomed(span, whole, 2, middle))} onOut={() => onSpan(zoomed(span, whole, 0.5, middle))} onAll={() => onSpan(whole)} />
+        </div>
+      </div>
+      {table && (
+        <div className="max-h-[420px] overflow-auto border-b px-(--margin)" tabIndex={0} role="region" aria-label="Numbers of the chart">
+          <TwinTable twin={twin} className="type-label w-full text-left [&_td]:border-b [&_td]:border-rule [&_td]:py-1 [&_td]:pr-3 [&_th]:border-b [&_th]:border-rule [&_th]:py-1 [&_th]:pr-3 [&_th]:font-semibold" />
+        </div>
+      )}
+    </section>
+  );
+}
+
+function Tools({ all, onIn, onOut, onAll }: { all: boolean; onIn: () => void; onOut: () => void; onAll: () => void }) {
+  return (
+    <>
+      <button type="button" className={TOOL} aria-label="Zoom in" onClick={onIn}>
+        +
+      </button>
+      <button type="button" className={TOOL} aria-label="Zoom out" onClick={onOut} disabled={all}>
+        −
+      </button>
+      <button type="button" className={TOOL} aria-label="Show all of it" onClick={onAll} disabled={all}>
+        all
+      </button>
+    </>
+  );
+}

@@ -1,0 +1,120 @@
+'use client';
+
+import { useRouter } from 'next/navigation';
+import { useState, type FormEvent } from 'react';
+import { Button, LinkButton } from '@/components/ui/Button';
+import { Select } from '@/components/ui/Field';
+import { Haze } from '@/components/ui/Haze';
+import { EmptyState, ErrorState, FormError } from '@/components/ui/Notice';
+import { useNow } from '@/components/ui/now';
+import { PageHead } from '@/components/ui/Page';
+import { Vessel } from '@/components/vessel/Vessel';
+import { createBatch } from '@/lib/client/batches';
+import { ClientError } from '@/lib/client/fetcher';
+import { useMe } from '@/lib/client/me';
+import { useSensors } from '@/lib/client/sensors';
+import { BatchFields } from './BatchFields';
+import { batchErrors, batchToCreate, newDraft, type BatchDraft, type BatchErrors } from './batch-form';
+import { toLocal } from './entry-form';
+import { typedNumber } from './figures';
+
+/** The first place that is wrong is where a person goes on. */
+function focusFirstError() {
+  requestAnimationFrame(() => document.querySelector<HTMLElement>('[aria-invalid="true"]')?.focus());
+}
+
+export function NewBatchPage() {
+  const { me, may, error, retry } = useMe();
+  const now = useNow();
+  if (error && !me) {
+    return (
+      <ErrorState title="The page did not load" onRetry={retry}>
+        {error.message}
+      </ErrorState>
+    );
+  }
+  if (!me || now === null) return <Haze height={320} className="m-(--margin)" />;
+  if (!may('batches.create')) {
+    return (
+      <EmptyState title="Starting a batch is for brewers" action={<LinkButton href="/shelf">To the shelf</LinkButton>}>
+        Ask a keeper of {me.cellar.name} for the role of a brewer.
+      </EmptyState>
+    );
+  }
+  return <NewBatchForm timeZone={me.cellar.time_zone} now={now / 1000} />;
+}
+
+function NewBatchForm({ timeZone, now }: { timeZone: string; now: number }) {
+  const router = useRouter();
+  const { sensors } = useSensors();
+  const [draft, setDraft] = useState<BatchDraft>(() => newDraft('cider', now, timeZone));
+  const [errors, setErrors] = useState<BatchErrors>({});
+  const [failed, setFailed] = useState<string | null>(null);
+  const [sending, setSending] = useState(false);
+  const free = (sensors ?? []).filter((sensor) => !sensor.disabled && sensor.batch === null);
+  const [volume, vessel] = [typedNumber(draft.volume), typedNumber(draft.vessel)];
+  const level = volume && vessel && volume > 0 && vessel > 0 ? Math.min(1, volume / vessel) : null;
+  const tag = typedNumber(draft.tag);
+
+  async function send(event: FormEvent) {
+    event.preventDefault();
+    const made = batchToCreate(draft, timeZone);
+    setErrors(made.errors ?? {});
+    setFailed(null);
+    if (made.errors) {
+      focusFirstError();
+      return;
+    }
+    setSending(true);
+    try {
+      const batch = await createBatch(made.batch);
+      router.push(`/batches/${batch.id}`);
+    } catch (error) {
+      const told = error instanceof ClientError ? error : null;
+      const fields = batchErrors(told?.fields ?? {});
+      setErrors(fields);
+      if (Object.keys(fields).length === 0) setFailed(told?.message ?? 'It was not started. Try again.');
+      else focusFirstError();
+      setSending(false);
+    }
+  }
+
+  return (
+    <>
+      <PageHead title="Start a batch" meta="Everything but the name, the kind and the volumes can be told later." />
+      <div className="mx-auto grid max-w-[1000px] gap-8 px-(--margin) py-5 wide:grid-cols-[minmax(0,600px)_1fr]">
+        <form onSubmit={(event) => void send(event)} noValidate className="flex flex-col gap-5">
+          <BatchFields draft={draft} errors={errors} onChange={setDraft} latest={toLocal(now, timeZone)} fresh>
+            <Select label="Sensor" value={draft.sensor} onChange={(event) => setDraft({ ...draft, sensor: event.target.value })} error={errors.sensor} hint={free.length === 0 ? 'No free sensor: readings by hand work alone.' : undefined}>
+              <option value="">none</option>
+              {free.map((sensor) => (
+                <option key={sensor.id} value={sensor.id}>
+                  {sensor.name}
+                </option>
+              ))}
+            </Select>
+          </BatchFields>
+          {failed && <FormError>{failed}</FormError>}
+          <div className="flex justify-end gap-2">
+            <LinkButton look="quiet" href="/shelf">
+              Not now
+            </LinkButton>
+            <Button look="first" type="submit" disabled={sending}>
+              {sending ? 'Starting' : 'Start the batch'}
+            </Button>
+          </div>
+        </form>
+        <aside className="hidden wide:block">
+          <div className="sticky top-6 flex flex-col items-center gap-3 border-l py-6">
+            <Vessel
+              silentPicture
+              height={170}
+              vessel={{ kind: draft.vesselKind, neck: draft.neck, level, drink: draft.colour, clearness: 'hazy', krausen: false, lees: 'none', tag: tag !== null && Number.isInteger(tag) && tag > 0 && tag < 1000 ? tag : null, silent: false }}
+            />
+            <p className="type-name text-center">{draft.name || 'An empty place'}</p>
+          </div>
+        </aside>
+      </div>
+    </>
+  );
+}

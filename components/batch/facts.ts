@@ -1,0 +1,42 @@
+import type { BatchBody } from '@/lib/contracts/batches';
+import { clock, dayName, dayRange, when } from '@/components/charts/zone';
+import { doubt, gravityText, percent } from './figures';
+import { dayOf } from './words';
+
+/** One place of the ruled line under a batch's name. */
+export interface Fact {
+  name: string;
+  figure: string;
+  more: string | null;
+  /** Shown on a phone too. */
+  phone: boolean;
+}
+
+const share = (part: number, whole: number) => Math.round((part / whole) * 100);
+
+/** What a reader wants at once, in the order of the fall. `now` in seconds since 1970. */
+export function factsOf(batch: BatchBody, now: number, timeZone: string): Fact[] {
+  const { assessment: judged, original_gravity: og } = batch;
+  const seconds = (iso: string) => Date.parse(iso) / 1000;
+  const day = dayOf(batch.pitched_at, now);
+  const bed = judged?.final_gravity ?? null;
+  const fallen = judged?.attenuation_percent ?? null;
+  const attenuable = og !== null && og > 1 && bed ? share(og - bed.value, og - 1) : null;
+  const end = judged?.terminal_at ?? null;
+  const heard = batch.sensor?.last_heard_at ?? null;
+  return [
+    { name: 'pitched', figure: batch.pitched_at ? dayName(seconds(batch.pitched_at), timeZone) : 'not yet', more: day === null ? null : `day ${day}`, phone: false },
+    { name: 'original gravity', figure: og === null ? 'not told' : gravityText(og), more: null, phone: true },
+    { name: 'now', figure: judged?.gravity ? gravityText(judged.gravity.value) : 'not known', more: judged?.gravity ? doubt(judged.gravity) : null, phone: true },
+    { name: 'bed', figure: bed ? gravityText(bed.value) : 'not known', more: bed && doubt(bed), phone: false },
+    { name: 'attenuation', figure: fallen === null ? '–' : `${Math.round(fallen)} %`, more: attenuable === null ? null : `of ${attenuable}`, phone: true },
+    { name: 'strength so far', figure: judged?.abv_percent ? percent(judged.abv_percent.value) : '–', more: judged?.expected_abv_percent ? `of ${judged.expected_abv_percent.value.toFixed(1)}` : null, phone: true },
+    {
+      name: 'likely end',
+      figure: judged?.stage === 'terminal' ? 'reached' : end && seconds(end.hi) > now ? dayRange(seconds(end.lo), seconds(end.hi), timeZone) : 'not known',
+      more: null,
+      phone: false,
+    },
+    { name: 'sensor', figure: batch.sensor?.name ?? 'none', more: heard ? `heard ${now - seconds(heard) < 43_200 ? clock(seconds(heard), timeZone) : when(seconds(heard), now, timeZone)}` : batch.sensor ? 'not heard yet' : null, phone: false },
+  ];
+}

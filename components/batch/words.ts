@@ -1,0 +1,28 @@
+import type { DrinkKind, Neck, Stage } from '@/lib/core/types';
+import type { BatchBody } from '@/lib/contracts/batches';
+import { litres } from './figures';
+
+export const KIND_WORDS: Record<DrinkKind, string> = { beer: 'beer', cider: 'cider or perry', mead: 'mead', wine: 'country wine' };
+export const NECK_WORDS: Record<Neck, string> = { blow_off: 'blow-off tube', airlock: 'airlock', bung: 'bung', open: 'open neck' };
+export const STAGE_WORDS: Record<Stage, string> = {
+  not_started: 'not started',
+  lag: 'in lag',
+  accelerating: 'gathering pace',
+  peak: 'at its peak',
+  slowing: 'slowing',
+  terminal: 'finished',
+  unknown: 'not known',
+};
+
+/** `tag 5, 10 L carboy, back row by the door` */
+export function placeWords(batch: Pick<BatchBody, 'tag' | 'volume_l' | 'vessel_l' | 'vessel_kind' | 'place'>): string {
+  const volume = batch.volume_l === batch.vessel_l ? litres(batch.vessel_l) : `${litres(batch.volume_l)} in a ${litres(batch.vessel_l)}`;
+  return [batch.tag === null ? null : `tag ${batch.tag}`, `${volume} ${batch.vessel_kind}`, batch.place].filter((part) => part !== null).join(', ');
+}
+
+/** Day 1 is the day of the pitch. */
+export function dayOf(pitchedAt: string | null, nowS: number): number | null {
+  if (pitchedAt === null) return null;
+  const days = (nowS - Date.parse(pitchedAt) / 1000) / 86_400;
+  return days < 0 ? null : Math.floor(days) + 1;
+}
