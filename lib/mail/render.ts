@@ -71,10 +71,9 @@ function blockText(block: Block): string {
     case 'state':
       return `[${block.word}]`;
     case 'title':
-      return `${block.text}\n`;
     case 'line':
-    case 'foot':
       return block.text;
+    case 'foot':
     case 'prose':
       return `\n${block.text}`;
     case 'part':
@@ -84,9 +83,9 @@ function blockText(block: Block): string {
     case 'caution':
       return `\nTake care. ${block.text}`;
     case 'link':
-      return `\n${block.label}: ${block.url}\n`;
+      return `\n${block.label}: ${block.url}`;
     case 'rule':
-      return `\n${'-'.repeat(40)}`;
+      return `\n${'-'.repeat(40)}\n`;
   }
 }
 

@@ -28,7 +28,10 @@ const DIGITS: Record<string, number> = { SG: 3, '°C': 1, 'L/h': 2, '%': 1, 'poi
 
 /** A figure with its unit, as it is written on the screen: `1.041`, `15.4 °C`, `−0.3 points/d`. */
 export function figure(value: number, unit: string): string {
-  const text = Number.isFinite(value) ? value.toFixed(DIGITS[unit] ?? 2).replace('-', '−') : '?';
+  if (!Number.isFinite(value)) return '?';
+  // Number() turns -0.0 into 0.
+  const digits = DIGITS[unit] ?? 2;
+  const text = (Number(value.toFixed(digits)) || 0).toFixed(digits).replace('-', '−');
   return unit === 'SG' || unit === '' ? text : `${text} ${unit}`;
 }
 

@@ -1,4 +1,4 @@
-import type { CallName, Neck, Verdict } from '../types';
+import type { CallName, EventKind, Neck, Stage, Verdict } from '../types';
 import type { Timing } from './machine';
 
 /** `act`: a person acts within the hour. `check`: go and look. `know`: may be done any day. */
@@ -19,6 +19,10 @@ export interface AlertRule extends Timing {
   notKinds: readonly string[];
   /** Only while the neck is closed by one of these; null: whatever closes it. */
   necks: readonly Neck[] | null;
+  /** In these stages it is no matter: a finished batch may stand cold, a must waits hot for its pitch. */
+  notStages: readonly Stage[];
+  /** An entry of this kind is the answer: once it is logged the alert is over; null: only the data tell. */
+  doneBy: EventKind | null;
   /** Data older than this say nothing about now; null: the call is about the silence itself. */
   freshMs: number | null;
   /** Those who were told that it began are told that it is over. */
@@ -34,7 +38,7 @@ const DAY = 24 * HOUR;
 const ACT = { level: 'act', restMs: 6 * HOUR, repeatMs: 4 * HOUR, repeats: 3, tellsEnd: true } as const;
 const CHECK = { level: 'check', restMs: DAY, repeatMs: DAY, repeats: 3, tellsEnd: true } as const;
 const KNOW = { level: 'know', restMs: DAY, repeatMs: null, repeats: 0, tellsEnd: false } as const;
-const ANY = { kinds: null, notKinds: [], necks: null } as const;
+const ANY = { kinds: null, notKinds: [], necks: null, notStages: [], doneBy: null } as const;
 
 /**
  * The rules that hold where nobody chose others. The spans are our own: the
@@ -61,16 +65,16 @@ export const ALERT_RULES: readonly AlertRule[] = [
     sentence: 'When the fall is slow, stuck or stopped by cold for 1 h.',
   },
   {
-    ...ANY, ...CHECK, name: 'temperature', call: 'temperature', verdicts: ['yes', 'hold'], forMs: HOUR, keepMs: 2 * HOUR, freshMs: 6 * HOUR,
-    sentence: 'When the temperature is outside the batch’s range for 1 h.',
+    ...ANY, ...CHECK, name: 'temperature', call: 'temperature', verdicts: ['yes', 'hold'], notStages: ['not_started', 'terminal'], forMs: HOUR, keepMs: 2 * HOUR, freshMs: 6 * HOUR,
+    sentence: 'When the temperature is outside the batch’s range for 1 h, until it is finished.',
   },
   {
     ...ANY, ...CHECK, name: 'sensor', call: 'sensor', verdicts: ['yes', 'hold'], forMs: 30 * MINUTE, keepMs: 30 * MINUTE, freshMs: null,
     sentence: 'When the sensor is silent, frozen or drifting for 30 min.',
   },
   {
-    ...ANY, ...KNOW, name: 'rack', call: 'rack', verdicts: ['yes'], forMs: 3 * HOUR, keepMs: HOUR, freshMs: 36 * HOUR,
-    sentence: 'When it can be racked, for 3 h.',
+    ...ANY, ...KNOW, name: 'rack', call: 'rack', verdicts: ['yes'], doneBy: 'rack', forMs: 3 * HOUR, keepMs: HOUR, freshMs: 36 * HOUR,
+    sentence: 'When it can be racked, for 3 h, until a racking is logged.',
   },
   {
     // Withdrawn at once and said aloud: somebody told "ready" may be washing bottles.

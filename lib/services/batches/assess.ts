@@ -37,18 +37,18 @@ export function assessBatch(batchId: string, { clock = systemClock, silenceCount
     if (!batch) return 'gone';
     const cellar = await Cellar.findByPk(batch.cellarId, { transaction, rejectOnEmpty: true });
     const at = clock.now();
-    const context = { neck: batch.neck, silenceCounts };
     if (batch.state === 'ended') {
-      await evaluateAlerts({ batch, cellar, assessment: null, context, at }, transaction);
+      await evaluateAlerts({ batch, cellar, assessment: null, context: { neck: batch.neck, events: [], silenceCounts }, at }, transaction);
       return 'ended';
     }
 
     const entries = await Entry.findAll({ where: { batchId, removedAt: { [Op.is]: null } }, transaction });
     const readings = await readingsOfBatch(batchId, at, transaction);
-    const judgement = assess(setupOf(batch, entries, cellar.timeZone), readings, at);
+    const setup = setupOf(batch, entries, cellar.timeZone);
+    const judgement = assess(setup, readings, at);
 
     await keep(batch, presentJudgement(judgement), new Date(at), transaction);
-    await evaluateAlerts({ batch, cellar, assessment: judgement.assessment, context, at }, transaction);
+    await evaluateAlerts({ batch, cellar, assessment: judgement.assessment, context: { neck: batch.neck, events: setup.events, silenceCounts }, at }, transaction);
     return 'assessed';
   });
 }
