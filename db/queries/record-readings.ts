@@ -56,8 +56,9 @@ with input as materialized (
 ), refused as (
   insert into refusals (sensor_id, received_at, road, reason, body)
   select s.id, to_timestamp(r.received), r.road, r.reason, r.body
-  from unnest($11::int[], $12::float8[], $13::text[], $14::text[], $15::bytea[]) as r (sensor_id, received, road, reason, body)
+  from unnest($11::int[], $12::float8[], $13::text[], $14::text[], $15::bytea[]) with ordinality as r (sensor_id, received, road, reason, body, place)
   left join sensors s on s.id = r.sensor_id
+  order by r.place
 ), told as (
   select pg_notify('fallbright_changes', json_build_object('cellar', cellar_id, 'kind', kind, 'batch', batch_id)::text)
   from (
