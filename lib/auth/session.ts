@@ -46,6 +46,12 @@ export async function sessionOf(jar: CookieJar): Promise<Session | null> {
   return { signInId, personId: first.personId, actor: actorOf(rows, jar.get(cellarCookie())?.value) };
 }
 
+/** Whether the sign-in is still open and the person still acts in that cellar in that role. */
+export async function holds(signInId: string, actor: Actor): Promise<boolean> {
+  const rows = await openSession(signInId);
+  return rows.some((row) => row.personId === actor.personId && row.cellarId === actor.cellarId && row.role === actor.role);
+}
+
 /** The session of the page being rendered, or null. */
 export async function currentSession(): Promise<Session | null> {
   return sessionOf(await cookies());

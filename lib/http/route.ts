@@ -7,6 +7,7 @@ import { sessionOf, type Session } from '../auth/session';
 import type { Endpoint } from '../contracts/endpoints';
 import { ForbiddenError, InvalidError, NotFoundError, UnauthenticatedError, UnavailableError, type FieldErrors } from '../errors';
 import { readJson } from './body';
+import { metrics } from './metrics';
 import { problemOf } from './problem';
 import { requireSameSite } from './same-site';
 
@@ -36,11 +37,10 @@ const DEADLINE_MS = 8_000;
  */
 export function route<E extends Endpoint>(endpoint: E, handle: (context: RouteContext<E>) => Promise<Answer<E['response']>>) {
   return async (request: NextRequest, { params }: { params: Promise<Record<string, string>> }): Promise<Response> => {
-    try {
-      return await inTime(answer(endpoint, handle, request, await params));
-    } catch (error) {
-      return problemOf(error, { method: request.method, path: request.nextUrl.pathname });
-    }
+    const done = metrics().requests.startTimer({ method: endpoint.method, route: endpoint.path });
+    const response = await inTime(params.then((raw) => answer(endpoint, handle, request, raw))).catch((error: unknown) => problemOf(error, { method: request.method, path: request.nextUrl.pathname }));
+    done({ status: response.status });
+    return response;
   };
 }
 

@@ -1,8 +1,31 @@
 import type { Transaction } from 'sequelize';
 import { database } from '@/db/client';
-import { CHANGES_CHANNEL, type Change } from '../contracts/events';
+import { listen, type Listener } from '@/db/listen';
+import { CHANGES_CHANNEL, changeSchema, type Change } from '../contracts/events';
 
 /** Says that something changed, once `transaction` commits; with a rollback nothing is said. It carries no data. */
 export async function notifyChange(change: Change, transaction: Transaction): Promise<void> {
   await database().query('select pg_notify($channel, $payload)', { bind: { channel: CHANGES_CHANNEL, payload: JSON.stringify(change) }, transaction });
+}
+
+/** Hears what changed in any cellar, for as long as the process lives; `onConnect` again after each break, since what was said meanwhile went unheard. */
+export function hearChanges(heard: { onChange(change: Change): void; onConnect(): void; onError(error: unknown): void }): Listener {
+  return listen({
+    channel: CHANGES_CHANNEL,
+    onConnect: heard.onConnect,
+    onError: heard.onError,
+    onMessage(payload) {
+      const change = changeOf(payload);
+      if (change) heard.onChange(change);
+      else heard.onError(new Error('a change was announced that cannot be read'));
+    },
+  });
+}
+
+function changeOf(payload: string): Change | null {
+  try {
+    return changeSchema.parse(JSON.parse(payload));
+  } catch {
+    return null;
+  }
 }

@@ -1,0 +1,4 @@
+import { endpoints } from '@/lib/contracts/endpoints';
+import { streamRoute } from '@/lib/http/stream';
+
+export const GET = streamRoute(endpoints.streamEvents);

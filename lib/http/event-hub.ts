@@ -1,0 +1,117 @@
+import 'server-only';
+import { may, type Actor } from '../auth/policies';
+import { holds } from '../auth/session';
+import type { Change } from '../contracts/events';
+import { logFor } from '../log';
+import { hearChanges } from '../services/changes';
+import { databaseIsAway } from './problem';
+
+/** So that a line through proxies stays open, and a browser sees that it is dead. */
+const BEAT_MS = 15_000;
+/** How long a person whose sign-in or membership has ended may still hear that something changed. */
+const RECHECK_MS = 30_000;
+/** A reader that has not taken this many messages is gone or hostile. */
+const MOST_BEHIND = 256;
+const RECONNECT_MS = 2_000;
+
+const log = logFor('events');
+const encoder = new TextEncoder();
+
+interface Stream {
+  actor: Actor;
+  signInId: string;
+  controller: ReadableStreamDefaultController<Uint8Array>;
+}
+
+/** All open event streams of this server, fed by one connection that listens to PostgreSQL. */
+class EventHub {
+  private readonly streams = new Set<Stream>();
+  private line: ReturnType<typeof hearChanges> | null = null;
+  private beats: NodeJS.Timeout | undefined;
+  private checks: NodeJS.Timeout | undefined;
+  private stopping = false;
+  private wasConnected = false;
+
+  /** A stream of one cellar's changes, open until the client goes, may no longer listen, or the server stops. */
+  open(actor: Actor, signInId: string, gone: AbortSignal): ReadableStream<Uint8Array> {
+    let stream: Stream | undefined;
+    return new ReadableStream<Uint8Array>(
+      {
+        start: (controller) => {
+          stream = { actor, signInId, controller };
+          controller.enqueue(encoder.encode(`retry: ${RECONNECT_MS}\nevent: beat\ndata:\n\n`));
+          if (this.stopping) return controller.close();
+          this.streams.add(stream);
+          const opened = stream;
+          gone.addEventListener('abort', () => this.drop(opened), { once: true });
+          this.begin();
+        },
+        cancel: () => stream && this.drop(stream),
+      },
+      new CountQueuingStrategy({ highWaterMark: MOST_BEHIND }),
+    );
+  }
+
+  get size(): number {
+    return this.streams.size;
+  }
+
+  /** Closes every stream, so that the server can end: an open one would keep it alive. */
+  async stop(): Promise<void> {
+    this.stopping = true;
+    for (const stream of [...this.streams]) this.drop(stream);
+    await this.line?.close();
+  }
+
+  private begin(): void {
+    this.line ??= hearChanges({
+      onChange: (change) => this.tell(change),
+      onError: (error) => log.warn({ err: error }, 'trouble on the line to the database'),
+      onConnect: () => this.connected(),
+    });
+    this.beats ??= setInterval(() => this.send(() => 'event: beat\ndata:\n\n'), BEAT_MS).unref();
+    this.checks ??= setInterval(() => void this.recheck(), RECHECK_MS).unref();
+  }
+
+  /** What was said while the line was down went unheard: streams end, and the pages that come back ask for everything. */
+  private connected(): void {
+    if (this.wasConnected) for (const stream of [...this.streams]) this.drop(stream);
+    this.wasConnected = true;
+  }
+
+  private tell(change: Change): void {
+    const message = `event: change\ndata: ${JSON.stringify(change)}\n\n`;
+    this.send((stream) => (stream.actor.cellarId === change.cellar && (change.kind !== 'alert' || may(stream.actor.role, 'alerts.read')) ? message : null));
+  }
+
+  private send(messageFor: (stream: Stream) => string | null): void {
+    for (const stream of [...this.streams]) {
+      const message = messageFor(stream);
+      if (message === null) continue;
+      if ((stream.controller.desiredSize ?? 0) <= 0) this.drop(stream);
+      else stream.controller.enqueue(encoder.encode(message));
+    }
+  }
+
+  /** Ends the streams whose sign-in or membership has ended; a database that does not answer ends none. */
+  private async recheck(): Promise<void> {
+    try {
+      for (const stream of [...this.streams]) if (!(await holds(stream.signInId, stream.actor))) this.drop(stream);
+    } catch (error) {
+      if (!databaseIsAway(error)) log.error({ err: error }, 'could not check a sign-in');
+    }
+  }
+
+  private drop(stream: Stream): void {
+    if (!this.streams.delete(stream)) return;
+    try {
+      stream.controller.close();
+    } catch {
+      // The client went first and closed it.
+    }
+  }
+}
+
+// Next.js may load a module once for routes and once for instrumentation: the hub is the process's.
+const held = globalThis as typeof globalThis & { fallbrightEventHub?: EventHub };
+export const eventHub = (): EventHub => (held.fallbrightEventHub ??= new EventHub());
