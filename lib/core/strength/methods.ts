@@ -28,24 +28,32 @@ const WHY =
 /** Error of Balling's relation itself, % vol: 0.2 up to 9 % vol, 0.5 at 14 (see abvBalling). */
 export const ballingError = (abv: number): number => (abv <= 9 ? 0.2 : Math.min(0.8, 0.2 + (0.3 * (abv - 9)) / 5));
 
+/** Spread of a function of the two gravities. */
+export type Ends = (f: (originalGravity: number, finalGravity: number) => number) => Range;
+
 /**
  * Strength, % vol, by three methods from an original and a final gravity with
- * their spreads. Never below 0.
+ * their spreads, each measured apart. Never below 0.
  */
 export function strengthByMethods(originalGravity: Range, finalGravity: Range): StrengthByMethod {
+  return strengthByMethodsOf(originalGravity, finalGravity, (f) => ({
+    lo: f(originalGravity.lo, finalGravity.hi),
+    value: f(originalGravity.value, finalGravity.value),
+    hi: f(originalGravity.hi, finalGravity.lo),
+  }));
+}
+
+/** The same where the two gravities depend on each other: `ends` knows how. */
+export function strengthByMethodsOf(originalGravity: Range, finalGravity: Range, ends: Ends): StrengthByMethod {
   const inputs = [
     ['original gravity', spell(originalGravity, 4), 'SG'],
     ['final gravity', spell(finalGravity, 4), 'SG'],
   ] as const;
-  const ends = (f: (og: number, fg: number) => number): Range => ({
-    lo: Math.max(0, f(originalGravity.lo, finalGravity.hi)),
-    value: Math.max(0, f(originalGravity.value, finalGravity.value)),
-    hi: Math.max(0, f(originalGravity.hi, finalGravity.lo)),
-  });
-  const simple = ends(abvSimple);
-  const plain = ends(abvBalling);
-  const balling = { lo: Math.max(0, plain.lo - ballingError(plain.lo)), value: plain.value, hi: plain.hi + ballingError(plain.hi) };
-  const excise = exciseRange(originalGravity, finalGravity);
+  const simple = notNegative(ends(abvSimple));
+  const plain = notNegative(ends(abvBalling));
+  const balling = notNegative({ lo: plain.lo - ballingError(plain.lo), value: plain.value, hi: plain.hi + ballingError(plain.hi) });
+  const middle = abvExcise(originalGravity.value, finalGravity.value);
+  const excise = middle && { ...notNegative(ends(exciseHeld)), truncated: middle.truncated };
   const middles = [simple.value, plain.value, ...(excise ? [excise.value] : [])];
   return {
     simple: figure(simple, '% vol', how('(OG − FG) × 131.25', SOURCES.factor131, inputs)),
@@ -64,13 +72,10 @@ export function strengthByMethods(originalGravity: Range, finalGravity: Range): 
   };
 }
 
-function exciseRange(originalGravity: Range, finalGravity: Range): ExciseRange | null {
-  const middle = abvExcise(originalGravity.value, finalGravity.value);
-  if (!middle) return null;
-  const low = abvExcise(originalGravity.lo, finalGravity.hi);
-  const high = abvExcise(originalGravity.hi, finalGravity.lo);
-  // Past the end of the table the last factor is held for the upper end alone.
+const notNegative = ({ lo, value, hi }: Range): Range => ({ lo: Math.max(0, lo), value: Math.max(0, value), hi: Math.max(0, hi) });
+
+/** For the ends of a spread alone: past the end of the table its last factor is held. */
+function exciseHeld(originalGravity: number, gravity: number): number {
   const last = EXCISE_FACTORS.at(-1)?.factor ?? 0;
-  const hi = high?.full ?? (originalGravity.hi - finalGravity.lo) * 1000 * last;
-  return { lo: low?.full ?? 0, value: middle.full, hi, truncated: middle.truncated };
+  return abvExcise(originalGravity, gravity)?.full ?? Math.max(0, (originalGravity - gravity) * 1000 * last);
 }
