@@ -99,6 +99,7 @@ export class Hooks {
     if (revoked.size === 0) return;
     for (const [client, { identity }] of this.signedIn) {
       if (!revoked.has(identity.id)) continue;
+      this.parts.directory.forget(identity.identifier);
       log.info({ sensor: identity.identifier }, 'cut off: its credential is no longer valid');
       this.signedIn.delete(client);
       this.senders.delete(client);

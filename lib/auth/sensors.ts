@@ -63,6 +63,11 @@ export class SensorDirectory {
     return known && !known.disabled ? known.identity : null;
   }
 
+  /** Asks the database again at the next sign-in of this sensor. */
+  forget(identifier: string): void {
+    this.remembered.delete(identifier);
+  }
+
   private find(identifier: string): Promise<Known | null> {
     if (!isSensorIdentifier(identifier)) return Promise.resolve(null);
     const now = this.clock.now();
