@@ -20,7 +20,8 @@ export const metadata: Metadata = {
 export const viewport: Viewport = { width: 'device-width', initialScale: 1, viewportFit: 'cover' };
 
 export default async function RootLayout({ children }: { children: ReactNode }) {
-  const nonce = (await headers()).get('x-nonce') ?? undefined;
+  // The proxy puts the answer's content policy on the request too; the theme's script needs its nonce.
+  const nonce = /'nonce-([^']+)'/.exec((await headers()).get('content-security-policy') ?? '')?.[1];
   return (
     // The script below sets the theme before React takes over.
     <html lang="en" data-theme="day" suppressHydrationWarning>

@@ -114,8 +114,8 @@ export function PhoneLane({ view, span, now, timeZone, staleAt, mayTake }: LaneP
               <span className="type-fig-lg">{figures.gravity}</span>
             </div>
             <div className="flex items-baseline justify-between gap-3">
-              <span className="type-label flex flex-wrap items-baseline gap-x-2 text-ink2">
-                <span aria-hidden>
+              <span className="type-label flex flex-wrap items-center gap-x-2 text-ink2">
+                <span aria-hidden className="leading-none">
                   <State state={attention.state} />
                 </span>
                 {view.when}

@@ -53,9 +53,9 @@ export function LaneCall({ view, mayTake }: { view: LaneView; mayTake: boolean }
   const { attention, headline, reason } = view;
   const low = attention.group === 'leave';
   return (
-    <div className={`flex min-w-0 flex-col ${low ? 'py-[5px]' : 'pb-2 pt-[7px]'}`}>
-      <div className="flex items-baseline justify-between gap-3">
-        <span aria-hidden>
+    <div className={`flex min-w-0 flex-col ${low ? 'py-[5px]' : attention.group === 'now' ? 'pb-2 pt-[7px]' : 'pb-1 pt-[6px]'}`}>
+      <div className="flex items-center justify-between gap-3">
+        <span aria-hidden className="leading-none">
           <State state={attention.state} />
         </span>
         <span className="type-label text-right text-ink2">{view.when}</span>
@@ -72,7 +72,7 @@ export function LaneCall({ view, mayTake }: { view: LaneView; mayTake: boolean }
           <p className={VERDICT[attention.group]}>
             <Sentence strong>{headline}</Sentence>
           </p>
-          <div className="flex min-h-9 items-end justify-between gap-5">
+          <div className="flex items-end justify-between gap-3">
             <p className="two-lines type-reason self-start text-ink2">
               <Sentence>{reason}</Sentence>
             </p>

@@ -5,15 +5,15 @@ import type { Span } from '@/components/charts/picture';
 export function ShelfAxis({ calendar, span, now }: { calendar: Calendar; span: Span; now: number }) {
   const share = (at: number) => ((at - span.from) / (span.to - span.from)) * 100;
   return (
-    <div aria-hidden className="relative h-full overflow-hidden font-mono text-[0.75rem] leading-[0.8125rem]">
+    <div aria-hidden className="relative h-full overflow-x-clip font-mono text-[0.75rem] leading-[0.8125rem]">
       {calendar.weekends.map((weekend) => (
-        <span key={weekend.from} className="absolute inset-y-0 -bottom-px bg-well" style={{ left: `${share(weekend.from)}%`, width: `${share(weekend.to) - share(weekend.from)}%` }} />
+        <span key={weekend.from} className="absolute top-0 -bottom-[1.5px] bg-well" style={{ left: `${share(weekend.from)}%`, width: `${share(weekend.to) - share(weekend.from)}%` }} />
       ))}
       {calendar.labels.map((label) => {
         const left = share(label.from);
         const width = share(label.to) - left;
-        // Of a day that is mostly outside, the figure would hang over the edge.
-        if (left < -width / 2 || left + width > 100 + width / 2) return null;
+        // A day that is not nearly whole in sight would have its figure cut.
+        if (left < -width / 4 || left + width > 100 + width / 4) return null;
         const today = label.today && label.from <= now;
         return (
           <span

@@ -42,7 +42,7 @@ function JobTime({ job }: { job: Job }) {
 
 function JobName({ job }: { job: Job }) {
   return (
-    <Link href={`/batches/${job.batchId}`} className="block truncate text-[1.0625rem]/[1.375rem] font-[520] text-ink no-underline hover:underline" title={job.text}>
+    <Link href={`/batches/${job.batchId}`} className="block truncate py-px text-[0.96875rem]/[1.3125rem] font-[480] text-ink no-underline hover:underline" title={job.text}>
       {job.text}
     </Link>
   );
@@ -82,13 +82,13 @@ export function Today({ jobs, ticks, nothing, now, timeZone, mayTake, loading }:
   return (
     <section aria-labelledby="today" className="grid min-h-20 border-b bg-desk max-wide:grid-cols-2 wide:grid-cols-[200px_repeat(5,minmax(0,1fr))]">
       <div className="flex flex-col justify-center py-2 pl-(--margin) pr-3">
-        <h2 id="today" className="type-head leading-[1.625rem]!">
+        <h2 id="today" className="mb-0.5 text-[1.4375rem]/[1.625rem] font-[780]">
           Today
         </h2>
-        <p className="type-label text-ink2">
+        <p className="type-label leading-5! text-ink2">
           {dayName(now, timeZone)}, {clock(now, timeZone)}
         </p>
-        <p className="type-label text-ink2">
+        <p className="type-label leading-5! text-ink2">
           {!loading && countWords(jobs)}
           {more > 0 && (
             <>
@@ -101,10 +101,10 @@ export function Today({ jobs, ticks, nothing, now, timeZone, mayTake, loading }:
         </p>
       </div>
       {shown.length === 0 ? (
-        <p className="col-span-full flex items-center border-l px-4 py-3 text-[1.0625rem]/[1.375rem] wide:col-span-5">{!loading && <span><Sentence>{nothing}</Sentence></span>}</p>
+        <p className="col-span-full flex items-center border-l px-4 py-3 text-[0.96875rem]/[1.3125rem] wide:col-span-5">{!loading && <span><Sentence>{nothing}</Sentence></span>}</p>
       ) : (
         shown.map((job) => (
-          <div key={job.key} className="flex min-w-0 gap-3 border-l px-3 pb-2 pt-2.5 max-wide:border-t">
+          <div key={job.key} className="flex min-w-0 gap-3 border-l px-3 pb-2 pt-[9px] max-wide:border-t">
             <JobBox job={job} ticks={ticks} mayTake={mayTake} />
             <div className="min-w-0 flex-1">
               <JobTime job={job} />

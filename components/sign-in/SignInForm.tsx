@@ -78,7 +78,7 @@ export function SignInForm({ to }: { to: string }) {
           <Sentence>Stay signed in on this device for 30 days</Sentence>
         </span>
       </Box>
-      <Button type="submit" look="first" size="tall" disabled={busy || !ready} className="w-full">
+      <Button type="submit" look="first" size="tall" disabled={busy || !ready} className="w-full text-[0.8125rem]!">
         {busy ? 'Signing in' : 'Sign in'}
       </Button>
     </form>

@@ -24,7 +24,7 @@ const SIZES: Record<ButtonSize, string> = {
 };
 
 export const buttonClass = (look: ButtonLook, size: ButtonSize, more = '') =>
-  `type-button max-strip:text-[0.84375rem] inline-flex shrink-0 items-center justify-center rounded border-[1.5px] text-center no-underline transition-colors duration-100 ${LOOKS[look]} ${SIZES[size]} ${more}`;
+  `type-button max-strip:text-[0.84375rem] inline-flex shrink-0 items-center justify-center whitespace-nowrap rounded border-[1.5px] text-center no-underline transition-colors duration-100 ${LOOKS[look]} ${SIZES[size]} ${more}`;
 
 interface Looks {
   look?: ButtonLook;

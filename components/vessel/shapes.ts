@@ -91,9 +91,9 @@ export function blowOffPaths(top: number, right: number): { tube: string; jar: s
 export function krausenPath(shape: VesselShape, y: number, height: number): { foam: string; edge: string } {
   const left = shape.left - 2;
   const width = shape.right - shape.left + 4;
-  const scallops = 7;
+  const scallops = 6;
   const step = width / scallops;
-  const arcs = Array.from({ length: scallops }, () => `a${(step / 2).toFixed(2)} ${(step / 2.6).toFixed(2)} 0 0 0 ${step.toFixed(2)} 0`).join('');
+  const arcs = `q${(step / 2).toFixed(2)} ${(-step / 2.6).toFixed(2)} ${step.toFixed(2)} 0`.repeat(scallops);
   const edge = `M${left} ${(y - height).toFixed(2)}${arcs}`;
   return { edge, foam: `${edge}V${y}H${left}Z` };
 }

@@ -12,19 +12,19 @@ function pageOf(to: string | string[] | undefined): string {
   return typeof to === 'string' && /^\/(?![/\\])/.test(to) ? to : '/shelf';
 }
 
-export default async function SignInPage({ searchParams }: { searchParams: Promise<{ to?: string | string[] }> }) {
-  const to = pageOf((await searchParams).to);
+export default async function SignInPage({ searchParams }: { searchParams: Promise<{ next?: string | string[] }> }) {
+  const to = pageOf((await searchParams).next);
   if (await currentSession()) redirect(to);
   return (
     <div className="flex min-h-dvh flex-col wide:flex-row">
-      <div className="flex flex-1 flex-col bg-desk px-(--margin) pt-6 wide:px-10 wide:pb-8 wide:pt-11">
+      <div className="flex flex-1 flex-col bg-desk px-(--margin) pt-6 wide:px-10 wide:pb-[58px] wide:pt-11">
         <Wordmark size={32} />
         <h1 className="type-display mt-6 max-strip:text-[1.875rem]! max-strip:leading-[2.125rem]! wide:mt-10">To fall bright: to clear by itself.</h1>
-        <p className="mt-2 pb-6 text-[1.125rem] leading-6 text-ink2 max-strip:text-[0.9375rem]">A watch on every vessel while it does. What to do next, when, and why.</p>
-        <Settling days={[1, 9, 24, 46, 90]} className="mt-auto hidden max-h-[56vh] max-w-[900px] wide:block" />
+        <p className="mt-2 pb-6 text-[1.0625rem] leading-6 text-ink2 max-strip:text-[0.9375rem]">A watch on every vessel while it does. What to do next, when, and why.</p>
+        <Settling days={[1, 9, 24, 46, 90]} className="mt-auto hidden max-h-[58vh] max-w-[920px] wide:block" />
       </div>
-      <div className="flex flex-col justify-center px-(--margin) py-8 max-wide:border-t-[1.5px] max-wide:border-ink wide:w-[461px] wide:border-l-[1.5px] wide:border-ink wide:px-14">
-        <div className="w-full max-w-[420px] wide:-mt-16">
+      <div className="flex flex-col justify-center px-(--margin) py-8 max-wide:border-t-[1.5px] max-wide:border-ink wide:w-[461px] wide:border-l-[1.5px] wide:border-ink wide:pl-[57px] wide:pr-14">
+        <div className="w-full max-w-[420px] wide:-mt-32">
           <SignInForm to={to} />
         </div>
       </div>
