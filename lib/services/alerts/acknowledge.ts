@@ -16,7 +16,7 @@ import { alertBody, lockAlert } from './load';
  * to look again. Somebody else may take it over.
  * @throws ConflictError where it has passed already.
  */
-export function acknowledgeAlert(actor: Actor, id: string, { note, look_again_at }: AcknowledgeAlert, { clock = systemClock }: { clock?: Clock } = {}): Promise<AlertBody> {
+export async function acknowledgeAlert(actor: Actor, id: string, { note, look_again_at }: AcknowledgeAlert, { clock = systemClock }: { clock?: Clock } = {}): Promise<AlertBody> {
   authorize(actor, 'alerts.acknowledge');
   return inTransaction(async (transaction) => {
     const { alert, standing } = await lockAlert(actor.cellarId, id, transaction);

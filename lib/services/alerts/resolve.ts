@@ -17,7 +17,7 @@ import { alertBody, lockAlert } from './load';
  * quiet until the condition has really gone and come back.
  * @throws ConflictError where it has passed already.
  */
-export function resolveAlert(actor: Actor, id: string, { note }: z.infer<typeof resolveInput>, { clock = systemClock }: { clock?: Clock } = {}): Promise<AlertBody> {
+export async function resolveAlert(actor: Actor, id: string, { note }: z.infer<typeof resolveInput>, { clock = systemClock }: { clock?: Clock } = {}): Promise<AlertBody> {
   authorize(actor, 'alerts.resolve');
   return inTransaction(async (transaction) => {
     const { alert, standing } = await lockAlert(actor.cellarId, id, transaction);
