@@ -57,10 +57,10 @@ function takeDataFolder(folder: string): () => void {
   return () => rmSync(file, { force: true });
 }
 
-async function checkPorts(env: Env): Promise<void> {
+async function checkPorts(env: Env, mailbox: boolean): Promise<void> {
   const wanted: Array<[string, number]> = [['PORT', env.PORT]];
   if (!env.MQTT_URL) wanted.push(['MQTT_PORT', env.MQTT_PORT]);
-  if (usesMailbox()) wanted.push(['MAILBOX_SMTP_PORT', env.MAILBOX_SMTP_PORT], ['MAILBOX_PORT', env.MAILBOX_PORT]);
+  if (mailbox) wanted.push(['MAILBOX_SMTP_PORT', env.MAILBOX_SMTP_PORT], ['MAILBOX_PORT', env.MAILBOX_PORT]);
   const seen = new Map<number, string>();
   for (const [name, port] of wanted) {
     const twin = seen.get(port);
@@ -69,8 +69,6 @@ async function checkPorts(env: Env): Promise<void> {
     if (!(await portIsFree(port, env.HOST))) throw new StartError(`Port ${port} (${name}) is taken by another program. Stop that program, or set ${name} to a free port.`);
   }
 }
-
-const usesMailbox = () => !process.env.SMTP_URL;
 
 function keepAuthSecret(env: Env): string {
   if (env.AUTH_SECRET) return env.AUTH_SECRET;
@@ -104,6 +102,8 @@ async function openDatabase(env: Env): Promise<{ url: string; cluster: Cluster |
 async function main(): Promise<void> {
   console.log('Fallbright');
   const env = readEnvironment();
+  // Asked before SMTP_URL is filled in for the parts.
+  const mailbox = !process.env.SMTP_URL;
   const releaseFolder = takeDataFolder(env.DATA_DIR);
   let cluster: Cluster | null = null;
   let stopping: Promise<void> | undefined;
@@ -124,7 +124,7 @@ async function main(): Promise<void> {
     });
 
   try {
-    await checkPorts(env);
+    await checkPorts(env, mailbox);
     const opened = await timed(env.DATABASE_URL ? 'Reaching PostgreSQL' : 'Starting PostgreSQL', () => openDatabase(env));
     cluster = opened.cluster;
     const common = {
@@ -146,7 +146,7 @@ async function main(): Promise<void> {
     if (!dev) await timed('Building the web part (half a minute when something changed)', () => buildWeb(ROOT, '.next', building.signal));
 
     const tsx = (file: string, ...args: string[]) => ['--import', 'tsx', join(ROOT, file), ...args];
-    if (usesMailbox()) processes.start({ name: 'mailbox', args: tsx('scripts/fakes/mailbox.ts') });
+    if (mailbox) processes.start({ name: 'mailbox', args: tsx('scripts/fakes/mailbox.ts') });
     processes.start(env.MQTT_URL ? { name: 'subscriber', args: tsx('broker/subscriber.ts') } : { name: 'broker', args: tsx('broker/server.ts') });
     processes.start({ name: 'worker', args: tsx('broker/worker.ts') });
     processes.start({ name: 'web', args: [join(ROOT, 'node_modules/next/dist/bin/next'), dev ? 'dev' : 'start', '-H', env.HOST, '-p', String(env.PORT)] });
@@ -157,7 +157,7 @@ async function main(): Promise<void> {
       waitUntil(`Fallbright (see ${join(env.DATA_DIR, 'log')})`, async () => (await fetch(`${base}/api/health`, { signal: AbortSignal.timeout(3_000) })).ok, dev ? 120_000 : 60_000),
     );
     console.log(`Ready: ${base}  (${((Date.now() - began) / 1000).toFixed(0)} s)`);
-    if (usesMailbox()) console.log(`  Mailbox: http://127.0.0.1:${env.MAILBOX_PORT}`);
+    if (mailbox) console.log(`  Mailbox: http://127.0.0.1:${env.MAILBOX_PORT}`);
     console.log(env.MQTT_URL ? `  Sensors: ${env.MQTT_URL}` : `  Sensors: mqtt://${env.HOST}:${env.MQTT_PORT}`);
     if (prepared.demoSignIns.length > 0) {
       console.log('  Demo sign-ins:');
