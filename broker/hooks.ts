@@ -4,7 +4,7 @@ import { RateLimiterMemory } from 'rate-limiter-flexible';
 import { hashSensorSecret, revokedSensors, type SensorDirectory, type SensorIdentity } from '@/lib/auth/sensors';
 import { readingsTopic, settingsTopic } from '@/lib/contracts/topics';
 import { logFor } from '@/lib/log';
-import type { Ingest } from './ingest';
+import { RETAINED, type Ingest } from './ingest';
 import { addressOf, type Door } from './limits';
 
 const log = logFor('broker');
@@ -73,7 +73,7 @@ export class Hooks {
           return callback(new Error('a sensor publishes to its own topic only'));
         }
         // A retained reading would be handed out as new for ever; the flag goes, and the sensor's page says why.
-        const refusedBecause = packet.retain ? 'it was sent as a retained message; switch "retain" off in the sensor' : undefined;
+        const refusedBecause = packet.retain ? RETAINED : undefined;
         packet.retain = false;
         // The library acknowledges when this is called back: after COMMIT.
         this.parts.ingest.accept({ sensor, road: 'mqtt', body, ...(refusedBecause ? { refusedBecause } : {}) }, () => callback(null));

@@ -17,6 +17,9 @@ const WAITING_BYTES = 32 << 20;
 const FIRST_PAUSE_MS = 100;
 const LONGEST_PAUSE_MS = 5_000;
 
+/** Why a retained message does not count, at either door. */
+export const RETAINED = 'it was sent as a retained message; switch "retain" off in the sensor';
+
 interface Waiting {
   message: Message;
   committed: () => void;

@@ -4,7 +4,7 @@ import { SensorDirectory } from '@/lib/auth/sensors';
 import { ALL_READINGS, sensorOfTopic } from '@/lib/contracts/topics';
 import { logFor } from '@/lib/log';
 import type { Message, Recorded } from '@/lib/services/readings/record';
-import { Ingest, type IngestCounts } from './ingest';
+import { Ingest, RETAINED, type IngestCounts } from './ingest';
 
 const log = logFor('subscriber');
 
@@ -14,7 +14,6 @@ const log = logFor('subscriber');
  * subscription: each message goes to one of them.
  */
 const CONNECTIONS = 16;
-const SHARED = `$share/fallbright-ingest/${ALL_READINGS}`;
 const REFUSED = 128;
 /** Longer than the longest stall of the database: while a message waits, no ping is answered. */
 const KEEPALIVE_S = 300;
@@ -43,9 +42,19 @@ export class OutsideBroker implements Subscription {
   private readonly clients: MqttClient[] = [];
   private readonly ingest: Ingest;
   private readonly directory = new SensorDirectory();
+  private readonly connections: number;
+  /**
+   * A broker hands messages to members of a share that are away, too, and keeps
+   * them for their return. So the share is this process's alone: one that never
+   * comes back must not hold what others wait for. Two processes both take every
+   * message, and the table keeps one.
+   */
+  private readonly shared: string;
   private stopped = false;
 
   private constructor(private readonly options: SubscriptionOptions) {
+    this.connections = options.connections ?? CONNECTIONS;
+    this.shared = `$share/fallbright-${options.instance}-of-${this.connections}/${ALL_READINGS}`;
     this.ingest = new Ingest({ record: options.record });
   }
 
@@ -53,7 +62,7 @@ export class OutsideBroker implements Subscription {
   static async subscribe(options: SubscriptionOptions): Promise<OutsideBroker> {
     const outside = new OutsideBroker(options);
     await outside.open(0);
-    await Promise.all(Array.from({ length: (options.connections ?? CONNECTIONS) - 1 }, (_, index) => outside.open(index + 1)));
+    await Promise.all(Array.from({ length: outside.connections - 1 }, (_, index) => outside.open(index + 1)));
     return outside;
   }
 
@@ -72,7 +81,7 @@ export class OutsideBroker implements Subscription {
 
   private open(index: number): Promise<void> {
     const settings: IClientOptions = {
-      clientId: `fallbright-ingest-${this.options.instance}-${index}`,
+      clientId: `fallbright-${this.options.instance}-${index}-of-${this.connections}`,
       protocolVersion: 4,
       clean: false,
       keepalive: KEEPALIVE_S,
@@ -107,7 +116,7 @@ export class OutsideBroker implements Subscription {
   }
 
   private async ask(client: MqttClient, index: number): Promise<void> {
-    const shared = await client.subscribeAsync(SHARED, { qos: 1 }).catch(() => null);
+    const shared = await client.subscribeAsync(this.shared, { qos: 1 }).catch(() => null);
     if (shared?.every((grant) => grant.qos !== REFUSED)) return;
     if (index > 0) {
       // Without shared subscriptions each connection would get every message: the first does it alone.
@@ -122,9 +131,9 @@ export class OutsideBroker implements Subscription {
     const identifier = sensorOfTopic(topic);
     for (;;) {
       try {
-        const sensor = identifier ? await this.directory.byIdentifier(identifier) : null;
-        const refusedBecause = retained ? 'it was sent as a retained message; switch "retain" off in the sensor' : undefined;
-        this.ingest.accept({ sensor, road: 'mqtt', body, ...(refusedBecause ? { refusedBecause } : {}) }, committed);
+        const known = identifier ? await this.directory.byIdentifier(identifier) : null;
+        const refusedBecause = known?.disabled ? 'the sensor is switched off' : retained ? RETAINED : undefined;
+        this.ingest.accept({ sensor: known?.identity ?? null, road: 'mqtt', body, ...(refusedBecause ? { refusedBecause } : {}) }, committed);
         return;
       } catch (error) {
         if (this.stopped) return;

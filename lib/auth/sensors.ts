@@ -58,9 +58,8 @@ export class SensorDirectory {
   }
 
   /** The sensor by its name alone, where another broker has already checked its secret. */
-  async byIdentifier(identifier: string): Promise<SensorIdentity | null> {
-    const known = await this.find(identifier);
-    return known && !known.disabled ? known.identity : null;
+  async byIdentifier(identifier: string): Promise<{ identity: SensorIdentity; disabled: boolean } | null> {
+    return this.find(identifier);
   }
 
   /** Asks the database again at the next sign-in of this sensor. */
