@@ -1,0 +1,100 @@
+import type { AlertBody } from '@/lib/contracts/alerts';
+import type { StateWord } from '@/lib/core/calls/attention';
+import { clock, dayName, duration, instantOf, wallTime, when } from '@/components/charts/zone';
+import type { VesselState } from '@/components/vessel/describe';
+
+const seconds = (iso: string): number => Date.parse(iso) / 1000;
+
+/** Shape and word of an alert. */
+export function alertState(alert: Pick<AlertBody, 'state' | 'level' | 'call' | 'kind'>): { state: StateWord; word: string } {
+  if (alert.state === 'resolved') return { state: 'Done', word: 'Cleared' };
+  if (alert.state === 'acknowledged') return { state: 'In hand', word: 'In hand' };
+  if (alert.call === 'sensor' && alert.kind === 'silent') return { state: 'Silent', word: 'Silent' };
+  if (alert.level === 'act') return { state: 'Now', word: 'Now' };
+  if (alert.level === 'check') return { state: 'Check', word: 'Check' };
+  return alert.call === 'neck' ? { state: 'Due', word: 'Due' } : { state: 'Ready', word: 'Ready' };
+}
+
+export function alertVessel({ batch, call, kind }: AlertBody): VesselState {
+  return {
+    kind: batch.vessel_kind as VesselState['kind'],
+    neck: batch.neck as VesselState['neck'],
+    level: Math.min(1, batch.volume_l / batch.vessel_l),
+    drink: batch.drink_colour,
+    clearness: 'hazy',
+    krausen: batch.neck === 'blow_off',
+    lees: 'none',
+    tag: null,
+    silent: call === 'sensor' && kind === 'silent',
+  };
+}
+
+/** `Oat stout, tag 5, since Tue 07:30` */
+export function alertMeta(alert: AlertBody, now: number, timeZone: string): string {
+  const note = alert.note === null ? null : `“${alert.note}”`;
+  const parts = [alert.batch.name, alert.batch.tag === null ? null : `tag ${alert.batch.tag}`, note ?? `since ${when(seconds(alert.since), now, timeZone)}`];
+  return parts.filter((part) => part !== null).join(', ');
+}
+
+/** What became of it, in at most two lines: who was told, who has it, who cleared it. */
+export function alertFate(alert: AlertBody, now: number, timeZone: string): { text: string; strong: boolean }[] {
+  const at = (iso: string) => when(seconds(iso), now, timeZone);
+  if (alert.state === 'resolved') {
+    return [{ text: alert.resolved_by ? `by ${alert.resolved_by.name}, ${alert.resolved_at ? at(alert.resolved_at) : ''}`.replace(/, $/, '') : `passed by itself${alert.resolved_at ? `, ${at(alert.resolved_at)}` : ''}`, strong: false }];
+  }
+  if (alert.state === 'acknowledged') {
+    const look = alert.look_again_at;
+    return [
+      { text: `${alert.acknowledged_by?.name ?? 'Somebody'} has it`, strong: true },
+      ...(look ? [{ text: `${seconds(look) <= now ? 'was to look' : 'looks'} again ${at(look)}`, strong: false }] : []),
+    ];
+  }
+  if (alert.told.length === 0) return [{ text: 'nobody told yet', strong: false }];
+  const told = toldLines(alert, now, timeZone).map((line) => ({ text: line.text, strong: false }));
+  return told.length > 2 ? [told[0]!, { text: `and ${told.length - 1} more`, strong: false }] : told;
+}
+
+export interface ToldLine {
+  time: string;
+  text: string;
+  state: 'sent' | 'waiting' | 'failed';
+}
+
+/** Who was told by mail, and whether it went; in time's order, what waits last. */
+export function toldLines(alert: Pick<AlertBody, 'told'>, now: number, timeZone: string): ToldLine[] {
+  const order = [...alert.told].sort((a, b) => (a.at ? seconds(a.at) : Infinity) - (b.at ? seconds(b.at) : Infinity));
+  return order.map((one) => {
+    const time = one.at ? when(seconds(one.at), now, timeZone) : '';
+    if (one.state === 'sent') return { time, text: `told ${one.person} ${time}`.trim(), state: 'sent' };
+    if (one.state === 'failed') return { time, text: `mail to ${one.person} failed`, state: 'failed' };
+    return { time, text: `telling ${one.person}`, state: 'waiting' };
+  });
+}
+
+export interface LookAgain {
+  /** Seconds since 1970. */
+  at: number;
+  /** `18:00`, `tomorrow 09:00` */
+  words: string;
+}
+
+/** Times worth offering for the next look: in two hours, this evening, tomorrow morning and evening. */
+export function lookAgainTimes(now: number, timeZone: string): LookAgain[] {
+  const today = wallTime(now, timeZone);
+  const on = (days: number, hour: number) => {
+    const date = new Date(Date.UTC(today.year, today.month - 1, today.day + days));
+    return instantOf({ year: date.getUTCFullYear(), month: date.getUTCMonth() + 1, day: date.getUTCDate(), hour }, timeZone);
+  };
+  const half = 1800;
+  const soon = Math.ceil((now + 2 * 3600) / half) * half;
+  const fixed = [on(0, 18), on(0, 21), on(1, 9), on(1, 18)].filter((at) => at > now + 3600 && Math.abs(at - soon) > half);
+  const tomorrow = on(1, 0);
+  return [soon, ...fixed]
+    .sort((a, b) => a - b)
+    .slice(0, 4)
+    .map((at) => ({ at, words: `${at >= tomorrow ? 'tomorrow ' : ''}${clock(at, timeZone)}` }));
+}
+
+/** How long it has been so, for the detail's head. */
+export const standsSince = (alert: AlertBody, now: number, timeZone: string): string =>
+  `since ${dayName(seconds(alert.since), timeZone)} ${clock(seconds(alert.since), timeZone)}, ${duration(now - seconds(alert.since))}`;
