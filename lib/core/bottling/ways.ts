@@ -66,22 +66,21 @@ function bottleStill(request: BenchRequest): WayOut[] {
   return offer('bottle_still', 'Bottle it still', 'No sugar added. It may turn lightly fizzy by itself.', still(request), true);
 }
 
-/** Kinds of bottle by what they hold, weakest first, with the closure that holds most. */
-const STRONGER: readonly { kind: BottleKind; closure: Closure }[] = [
-  { kind: 'heavy_beer', closure: 'crown_26' },
-  { kind: 'sparkling_wine', closure: 'wired_stopper' },
-  { kind: 'pet', closure: 'pet_cap' },
+/** Kinds of bottle, weakest first, with the closure that holds most and the highest figure a maker is likely to give, bar. */
+const STRONGER: readonly { kind: BottleKind; closure: Closure; upTo: number }[] = [
+  { kind: 'heavy_beer', closure: 'crown_26', upTo: 4 },
+  { kind: 'pet', closure: 'pet_cap', upTo: 6 },
+  { kind: 'sparkling_wine', closure: 'wired_stopper', upTo: 8 },
 ];
 
 function otherBottles(request: BenchRequest): WayOut[] {
-  return STRONGER.flatMap(({ kind, closure }) => {
+  return STRONGER.flatMap(({ kind, closure, upTo }) => {
+    if (request.bottles.every((b) => b.choice.kind === kind)) return [];
     const entry = BOTTLES[kind];
-    if (request.bottles.every((b) => b.choice.kind === kind) || entry.rating === 'never') return [];
-    const rating = entry.rating;
     const choices: BenchBottle[] = entry.usualSizesMl
       .filter((ml) => ml <= 1000)
       .toSorted((a, b) => b - a)
-      .map((sizeMl) => ({ key: `${kind}-${sizeMl}`, choice: { kind, closure, sizeMl, confirmedBar: rating }, atHand: null }));
+      .map((sizeMl) => ({ key: `${kind}-${sizeMl}`, choice: { kind, closure, sizeMl, confirmedBar: upTo }, atHand: null }));
     // Drops were counted for other sizes: keep the grams in a litre.
     const first = request.bottles[0];
     const perL = request.priming.way === 'drops' && first ? (request.priming.drops[first.key] ?? 0) / first.choice.sizeMl : 0;
@@ -89,13 +88,12 @@ function otherBottles(request: BenchRequest): WayOut[] {
       request.priming.way === 'drops'
         ? { ...request.priming, drops: Object.fromEntries(choices.map((c) => [c.key, Math.floor(perL * c.choice.sizeMl + 1e-9)])) }
         : request.priming;
-    const tried = { ...request, bottles: choices, priming };
-    // The rating is the catalogue's: to use it, somebody has to confirm the maker's figure.
+    const changed = { ...request, bottles: choices, priming };
+    const tried = work(changed);
+    // To use it, somebody has to confirm the maker's figure: the catalogue's is only usual.
     const unconfirmed = choices.map((c) => ({ ...c, choice: { ...c.choice, confirmedBar: null } }));
-    return offer('other_bottles', `Use a ${entry.name}`, `Once its maker’s figure is confirmed at ${rating.toFixed(1)} bar or more. ${entry.note}`, tried, true).map((way) => ({
-      ...way,
-      request: { ...tried, bottles: unconfirmed },
-    }));
+    const sentence = `Once its maker’s figure is confirmed at ${tried.worstBar.toFixed(1)} bar or more. ${entry.note}`;
+    return offer('other_bottles', `Use a ${entry.name}`, sentence, changed, true, tried).map((way) => ({ ...way, request: { ...changed, bottles: unconfirmed } }));
   });
 }
 

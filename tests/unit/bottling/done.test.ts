@@ -1,0 +1,110 @@
+import fc from 'fast-check';
+import { describe, expect, test } from 'vitest';
+import { agreementHours, checkDone } from '@/lib/core/bottling/done';
+import { DAY, doneInput, NOW } from '../../support/bench';
+
+const twice = (gravity: number) => [
+  { at: NOW - 8 * DAY, gravity },
+  { at: NOW, gravity },
+];
+
+describe('is it done', () => {
+  test('two equal readings a week apart, the float at rest, inside the expected range: done', () => {
+    expect(checkDone(doneInput())).toMatchObject({ verdict: 'done', explanation: 'dry', readAgainAt: null });
+  });
+
+  test('one reading settles nothing, and it says when the next one does', () => {
+    const check = checkDone(doneInput({ hydrometer: [{ at: NOW, gravity: 1.0 }] }));
+    expect(check.verdict).toBe('unknown');
+    expect(check.readAgainAt).toBe(NOW + agreementHours(NOW - 56 * DAY, NOW) * 3_600_000);
+  });
+
+  test('no reading by hand: unknown, and nothing is said of the sugar', () => {
+    expect(checkDone(doneInput({ hydrometer: [] }))).toMatchObject({ verdict: 'unknown', gravity: null, remaining: null });
+  });
+
+  test('equal readings a day apart are too close together', () => {
+    const check = checkDone(doneInput({ hydrometer: [{ at: NOW - DAY, gravity: 1 }, { at: NOW, gravity: 1 }] }));
+    expect(check.verdict).toBe('unknown');
+    expect(check.reasons[0]).toContain('1 day only');
+  });
+
+  test('the older the batch, the longer its readings must agree: 3 to 7 days', () => {
+    expect(agreementHours(NOW - 5 * DAY, NOW)).toBe(72);
+    expect(agreementHours(NOW - 25 * DAY, NOW)).toBe(120);
+    expect(agreementHours(NOW - 300 * DAY, NOW)).toBe(168);
+    expect(agreementHours(null, NOW)).toBe(168);
+  });
+
+  test('a fall of more than a point between readings: not yet', () => {
+    expect(checkDone(doneInput({ hydrometer: [{ at: NOW - 8 * DAY, gravity: 1.0021 }, { at: NOW, gravity: 1.001 }] })).verdict).toBe('not_yet');
+    expect(checkDone(doneInput({ hydrometer: [{ at: NOW - 8 * DAY, gravity: 1.002 }, { at: NOW, gravity: 1.001 }] })).verdict).toBe('done');
+  });
+
+  test('equal readings do not help while the float may still fall by more than half a point a day', () => {
+    expect(checkDone(doneInput({ floatRate: { lo: 0, value: 0.3, hi: 0.6 } })).verdict).toBe('not_yet');
+  });
+
+  test('readings from before an addition do not count, and five days must pass after it', () => {
+    expect(checkDone(doneInput({ lastAdditionAt: NOW - 4 * DAY })).verdict).toBe('not_yet');
+    expect(checkDone(doneInput({ lastAdditionAt: NOW - 6 * DAY })).verdict).toBe('unknown');
+  });
+
+  test('a reading older than a week says nothing of today', () => {
+    expect(checkDone(doneInput({ hydrometer: [{ at: NOW - 20 * DAY, gravity: 1 }, { at: NOW - 9 * DAY, gravity: 1 }] })).verdict).toBe('unknown');
+  });
+
+  test('readings after now are not known now', () => {
+    expect(checkDone(doneInput({ hydrometer: [{ at: NOW - 8 * DAY, gravity: 1 }, { at: NOW + DAY, gravity: 1 }] })).verdict).toBe('unknown');
+  });
+});
+
+describe('sugar left, explained or not', () => {
+  test('stopped high without a reason: the dangerous one; all its sugar counts', () => {
+    const check = checkDone(doneInput({ hydrometer: twice(1.012) }));
+    expect(check).toMatchObject({ verdict: 'stopped_high', explanation: null });
+    // 1.050 at 107 % attenuation is 0.9965.
+    expect(check.remaining?.value.hi).toBeCloseTo(15.5, 6);
+  });
+
+  test('a yeast at its tolerance explains sweetness, but the sugar is still sugar', () => {
+    const check = checkDone(doneInput({ kind: 'mead', originalGravity: 1.11, toleranceAbv: 12, expectedFinal: { lo: 1.018, value: 1.022, hi: 1.026 }, hydrometer: twice(1.02) }));
+    expect(check).toMatchObject({ verdict: 'done', explanation: 'tolerance' });
+    expect(check.remaining?.value.hi).toBeGreaterThan(30);
+  });
+
+  test('a sweetener that does not ferment explains its own points and is not counted as sugar', () => {
+    const check = checkDone(doneInput({ hydrometer: twice(1.01), unfermentablePoints: 9 }));
+    expect(check).toMatchObject({ verdict: 'done', explanation: 'sweetener' });
+    expect(check.remaining?.value.hi).toBeCloseTo(1.5, 6);
+  });
+
+  test('stabilised at rest: nothing is left to ferment; stabilised at work: everything still is', () => {
+    expect(checkDone(doneInput({ hydrometer: twice(1.012), stabilised: true }))).toMatchObject({ verdict: 'done', explanation: 'stabilised', remaining: { value: { hi: 0 } } });
+    const working = checkDone(doneInput({ hydrometer: [{ at: NOW - 8 * DAY, gravity: 1.02 }, { at: NOW, gravity: 1.012 }], stabilised: true }));
+    expect(working.verdict).toBe('not_yet');
+    expect(working.remaining?.value.hi).toBeGreaterThan(10);
+  });
+
+  test('without anything known of the yeast a sweet batch is unknown, a dry one done', () => {
+    expect(checkDone(doneInput({ expectedFinal: null, hydrometer: twice(1.006) })).verdict).toBe('unknown');
+    expect(checkDone(doneInput({ expectedFinal: null, hydrometer: twice(0.998) })).verdict).toBe('done');
+  });
+
+  test('a diastatic yeast is not trusted above 1.000, whatever its range says', () => {
+    const check = checkDone(doneInput({ kind: 'beer', originalGravity: 1.06, diastatic: true, expectedFinal: { lo: 1.006, value: 1.008, hi: 1.01 }, hydrometer: twice(1.008) }));
+    expect(check.verdict).toBe('stopped_high');
+    expect(check.remaining?.value.hi).toBeGreaterThanOrEqual(8);
+  });
+
+  test('a hydrometer is never trusted to better than half a point of sugar', () => {
+    fc.assert(
+      fc.property(fc.double({ min: 0.985, max: 1.06, noNaN: true }), fc.boolean(), fc.boolean(), (gravity, known, diastatic) => {
+        const { remaining } = checkDone(doneInput({ hydrometer: twice(gravity), diastatic, ...(known ? {} : { expectedFinal: null, originalGravity: null }) }));
+        expect(remaining?.value.hi).toBeGreaterThanOrEqual(0.5);
+        expect(remaining?.value.lo).toBeLessThanOrEqual(remaining?.value.value ?? NaN);
+        expect(remaining?.value.value).toBeLessThanOrEqual(remaining?.value.hi ?? NaN);
+      }),
+    );
+  });
+});
