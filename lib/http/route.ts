@@ -36,22 +36,23 @@ const DEADLINE_MS = 8_000;
  * answer held to its schema. Whatever is thrown becomes a problem document.
  */
 export function route<E extends Endpoint>(endpoint: E, handle: (context: RouteContext<E>) => Promise<Answer<E['response']>>) {
-  return async (request: NextRequest, { params }: { params: Promise<Record<string, string>> }): Promise<Response> => {
+  return async (request: NextRequest, context: { params?: Promise<Record<string, string>> }): Promise<Response> => {
     const done = metrics().requests.startTimer({ method: endpoint.method, route: endpoint.path });
-    const response = await inTime(params.then((raw) => answer(endpoint, handle, request, raw))).catch((error: unknown) => problemOf(error, { method: request.method, path: request.nextUrl.pathname }));
+    const response = await inTime(answer(endpoint, handle, request, context.params)).catch((error: unknown) => problemOf(error, { method: request.method, path: request.nextUrl.pathname }));
     done({ status: response.status });
     return response;
   };
 }
 
-async function answer<E extends Endpoint>(endpoint: E, handle: (context: RouteContext<E>) => Promise<Answer<E['response']>>, request: NextRequest, rawParams: Record<string, string>): Promise<Response> {
+async function answer<E extends Endpoint>(endpoint: E, handle: (context: RouteContext<E>) => Promise<Answer<E['response']>>, request: NextRequest, rawParams: Promise<Record<string, string>> | undefined): Promise<Response> {
   const { session, actor } = await admit(endpoint, request);
   const headers = new Headers({ 'cache-control': 'private, no-store' });
   const context = {
     request,
     session,
     actor,
-    params: parseParams(endpoint, rawParams),
+    // Next.js gives none where the path has none.
+    params: parseParams(endpoint, (await rawParams) ?? {}),
     query: parse(endpoint.query, queryOf(request), 'Some values of the query are wrong.'),
     body: endpoint.body ? parse(endpoint.body, await readJson(request), 'Some values are wrong.') : undefined,
     headers,
