@@ -192,7 +192,8 @@ export class Truths {
       case 'sluggish':
         return this.rate(hour - 12) < 3 && this.remaining(hour) > 4.5;
       case 'stuck':
-        return this.gravity(hour - 48) - this.gravity(hour) < 1.8 && this.remaining(hour) > 4;
+        // Half a day of grace either way: nobody sees a stall, or its end, at once.
+        return [hour, hour - 12].some((h) => this.gravity(h - 48) - this.gravity(h) < 1.8 && this.remaining(h) > 3);
       case 'terminal':
         return this.remaining(hour) <= 2;
       case 'ready to rack':

@@ -1,6 +1,7 @@
 import type { BatchEvent, BatchSetup, Instant, Reading } from '../types';
 import { appendBin, binFrom, newBins, type Bins } from './bins';
 import { robustLine, type Line } from './line';
+import { fitTail, type Tail } from './tail';
 import { median, medianInPlace } from './order';
 
 export const HOUR_MS = 3_600_000;
@@ -124,10 +125,22 @@ export class Track {
 
   /** Robust line over [from, to) h, frozen stretches left out. Null when less than `cover` of it has data. */
   line(from: number, to: number, cover = 0.6): Line | null {
+    const kept = this.gather(from, to, cover);
+    return kept < 5 ? null : robustLine(lineT, lineG, 0, kept);
+  }
+
+  /** What is still to fall after `to`, from the record since `from`; null when less than three quarters of it has data. */
+  tail(from: number, to: number): Tail | null {
+    const kept = this.gather(from, to, 0.75);
+    return kept < 10 ? null : fitTail(lineT, lineG, 0, kept, to, to / 24);
+  }
+
+  /** Copies the sound bins of [from, to) side by side; their number, or 0 when they cover too little. */
+  private gather(from: number, to: number, cover: number): number {
     const { bins } = this;
     const a = binFrom(bins, Math.ceil(from - 1e-9));
     const b = this.upTo(to);
-    if (b - a < 5) return null;
+    if (b - a < 5) return 0;
     let kept = 0;
     let covered = 0;
     const reach = Math.max(1.01, 1.6 * this.spacing);
@@ -138,8 +151,7 @@ export class Track {
       covered += kept === 0 ? Math.min(1, reach) : Math.min(lineT[kept]! - lineT[kept - 1]!, reach);
       kept += 1;
     }
-    if (kept < 5 || covered < cover * (to - from)) return null;
-    return robustLine(lineT, lineG, 0, kept);
+    return covered < cover * (to - from) ? 0 : kept;
   }
 
   /** Median gravity of [from, to), points, steps out and frozen stretches left out; null with no data. */
@@ -243,17 +255,19 @@ export class Track {
   }
 
   /**
-   * Looks for an unlogged step between `hour` - 23 and `hour` - 20. Robust lines of
-   * the 16 h before and after, and again of the 24 h before and the 20 h after (a
-   * burst of bubbles spoils one pair, hardly both), must part by more than 2.2
-   * points, four standard errors and three tenths of the change of slope.
+   * Looks for an unlogged step between `hour` - 35 and `hour` - 32, in a quiet
+   * stretch only: while the fall is steep its own bend looks like a step. Robust
+   * lines of the 24 h that end 8 h before and begin 8 h after are drawn out to the
+   * edge, so that a burst of bubbles beside it (under 8 h) spoils neither; they must
+   * part by more than 2.2 points and four standard errors, and the lines right
+   * beside the edge must agree.
    */
   findStep(hour: number, notBefore: number): { hour: number; points: number } | null {
     const { bins } = this;
-    const first = binFrom(bins, hour - 23);
-    const last = binFrom(bins, hour - 20);
+    const first = binFrom(bins, hour - 35);
+    const last = binFrom(bins, hour - 32);
     let best = -1;
-    let widest = 1.5;
+    let widest = 1.4;
     for (let i = Math.max(first, 3); i < last && i + 2 < bins.n; i += 1) {
       if (bins.hour[i]! < notBefore + 12) continue;
       if (bins.masked[i] || bins.masked[i - 1] || bins.t[i]! - bins.t[i - 1]! > Math.max(3, 2.5 * this.spacing)) continue;
@@ -266,26 +280,27 @@ export class Track {
       }
     }
     if (best < 0) return null;
-    const near = this.jumpAt(best, 16, 16);
-    const wide = this.jumpAt(best, 24, 20);
-    if (near === null || wide === null || near * wide < 0) return null;
+    const wide = this.jumpAt(best, 8, 24);
+    const near = this.jumpAt(best, 0, 16);
+    if (wide === null || near === null || near * wide < 0 || Math.abs(near) < 0.5 * Math.abs(wide)) return null;
     return { hour: bins.hour[best]!, points: Math.abs(near) < Math.abs(wide) ? near : wide };
   }
 
-  /** Step just before bin i as the parting of two robust lines; null when it is within their doubt. */
-  private jumpAt(i: number, hoursBefore: number, hoursAfter: number): number | null {
+  /** Step just before bin i as the parting of two robust lines `gap` h away from it; null when it is within their doubt. */
+  private jumpAt(i: number, gap: number, span: number): number | null {
     const { bins } = this;
     const at = bins.hour[i]!;
-    const before = this.line(at - hoursBefore, at, 0.6);
-    const after = this.line(at, at + hoursAfter, 0.6);
+    const before = this.line(at - gap - span, at - gap, 0.6);
+    const after = this.line(at + gap, at + gap + span, 0.6);
     if (!before || !after) return null;
+    const bend = Math.abs(after.slope - before.slope);
+    if (Math.max(-before.slope, -after.slope) > 7 || bend > 4) return null;
     const edge = (bins.t[i]! + bins.t[i - 1]!) / 2;
     const levelBefore = before.level + (before.slope / 24) * (edge - before.middle);
     const levelAfter = after.level + (after.slope / 24) * (edge - after.middle);
     const points = levelAfter - levelBefore;
-    const se = Math.hypot(before.se, after.se) / 3;
-    const limit = Math.max(2.2, 4 * se, 0.3 * Math.abs(after.slope - before.slope), 0.12 * Math.abs(before.slope));
-    return Math.abs(points) > limit ? points : null;
+    const se = (Math.hypot(before.se, after.se) * (gap + span / 2)) / 24;
+    return Math.abs(points) > Math.max(2.2, Math.min(4, 4 * se), 0.3 * bend) ? points : null;
   }
 
   // Frozen float.

@@ -72,7 +72,7 @@ export function fitSegment(
     const b = Math.min(n - 1, c + 1);
     const rate = Math.abs(g[b]! - g[a]!) / Math.max(1, hours[b]! - hours[a]!) * 24;
     const u = Math.min(1, Math.max(0, (g[c]! - fgPrior.mean) / drop));
-    sd[c] = Math.sqrt((1 + 10 * u) ** 2 + (0.3 * rate) ** 2 + 0.81 / counts[c]!);
+    sd[c] = Math.sqrt((0.6 + 10 * u) ** 2 + (0.3 * rate) ** 2 + 0.81 / counts[c]!);
   }
   return fitCurve({ n, tau, g, sd }, curvePrior(setup.kind, og, fgPrior, segment.restarted), start);
 }

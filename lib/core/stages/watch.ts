@@ -5,6 +5,7 @@ import { gasLPerH, swapGasLPerH } from '../gas/gas';
 import { POINTS_PER_G_PER_L } from '../gravity/extract';
 import type { Line } from '../series/line';
 import { median } from '../series/order';
+import type { Tail } from '../series/tail';
 import { Track, type Segment } from '../series/track';
 import { pointsOf } from '../units/convert';
 import { fitSegment } from './curve';
@@ -12,6 +13,9 @@ import { hold, latch, type Latch } from './latch';
 
 /** Hours between two looks. The grid is anchored at the pitch, so that shifting all times shifts all answers. */
 export const LOOK_H = 3;
+/** Points that may still come, nine times in ten, when a batch is called finished, and when it may be bottled. */
+export const TERMINAL_POINTS = 1.7;
+export const BOTTLE_POINTS = 1.0;
 /** Share of fruit that is sugar where nobody says. Common practice. */
 const FRUIT_SUGAR = 0.1;
 
@@ -74,6 +78,7 @@ export class Watch {
   private lines = new Map<number, Line | null>();
   private fitCache: { key: number; fit: CurveFit | null } | null = null;
   private lastFit: CurveFit | null = null;
+  private tailCache: Tail | null | undefined;
 
   constructor(
     readonly setup: BatchSetup,
@@ -134,7 +139,12 @@ export class Watch {
   /** Highest gravity at which the batch may be done, points. */
   zoneTop(): number {
     const prior = this.fgPrior();
-    return prior.mean + Math.max(1.5 * Math.hypot(prior.sd, this.track.calibrationSd(prior.mean)), 2.5);
+    return prior.mean + Math.max(1.6 * Math.hypot(prior.sd, this.track.calibrationSd(prior.mean)), 3);
+  }
+
+  /** Lowest gravity at which a batch that rests may be called stuck, points; between the two it is not known. */
+  stuckFloor(): number {
+    return Math.max(this.zoneTop() + 1.5, this.fgPrior().mean + 5.5);
   }
 
   /** The fitted curve; anew every 6 h to day 10, every 12 h to day 30, then once a day. */
@@ -151,27 +161,45 @@ export class Watch {
     return fit;
   }
 
-  /** Expected final gravity, points: from the curve, never above the present level by more than 1.5. */
-  expectedFg(): number | null {
+  /** What is still to come by the end of the record alone: a quarter of the age, at least 3 and at most 10 days of it. */
+  tail(): Tail | null {
+    if (this.tailCache === undefined) {
+      const now = this.lookedAt;
+      const window = Math.max(72, Math.min(240, 0.25 * now));
+      const since = Math.max(now - window, this.segment.restarted ? this.segment.from + 24 : 0);
+      this.tailCache = now - since < 66 ? null : this.track.tail(since, now);
+    }
+    return this.tailCache;
+  }
+
+  /** Points still to fall, and how well that is known: the curve and the tail, weighted by their variances. */
+  remainingNow(): { value: number; sd: number } | null {
+    const level = this.levelNow();
+    if (level === null) return null;
     const fit = this.fit();
-    return fit ? fit.parameters[1]! : null;
+    const tail = this.peaked.on ? this.tail() : null;
+    const parts: { value: number; sd: number }[] = [];
+    if (fit) parts.push({ value: level - fit.parameters[1]!, sd: Math.hypot(fit.fgSd, 0.6) });
+    if (tail) parts.push({ value: tail.remaining, sd: Math.hypot(1.3 * tail.sd, 0.3) });
+    if (parts.length === 0) return null;
+    let weight = 0;
+    let sum = 0;
+    for (const part of parts) {
+      weight += 1 / part.sd ** 2;
+      sum += part.value / part.sd ** 2;
+    }
+    return { value: sum / weight, sd: Math.sqrt(1 / weight) };
   }
 
   remaining(): number | null {
-    const level = this.levelNow();
-    const fg = this.expectedFg();
-    return level === null || fg === null ? null : level - fg;
+    return this.remainingNow()?.value ?? null;
   }
 
-  /** Stable over the smallest window of 48, 72, 120, 168 h that is at least `needed`. */
-  stableOver(needed: number, slopeLimit: number, upperLimit: number): { window: number; line: Line } | null {
-    const window = [48, 72, 120, 168].find((w) => w >= needed - 1e-9) ?? 168;
-    const from = this.lookedAt - window;
-    const line = from < this.segment.from ? null : this.track.line(from, this.lookedAt, 0.75);
-    if (!line) return null;
-    if (Math.abs(line.slope) >= slopeLimit / window) return null;
-    if (-line.slope + 1.64 * line.se >= upperLimit / window) return null;
-    return { window, line };
+  /** Expected final gravity, points. */
+  expectedFg(): number | null {
+    const left = this.remainingNow();
+    const level = this.levelNow();
+    return left === null || level === null ? null : level - left.value;
   }
 
   get age(): number {
@@ -198,6 +226,7 @@ export class Watch {
   advance(hour: number, readings: Reading[]): void {
     this.lookedAt = hour;
     this.lines.clear();
+    this.tailCache = undefined;
     this.track.extend(readings, this.track.instantOf(hour));
     while (this.eventsTaken < this.events.length && this.track.hourOf(this.events[this.eventsTaken]!.at) <= hour) {
       this.take(this.events[this.eventsTaken]!);
@@ -327,7 +356,7 @@ export class Watch {
     const index = this.track.noiseIndex(this.lookedAt);
     if (index === null) return;
     const usual = this.noiseHistory.length >= 6 ? median(this.noiseHistory) : null;
-    const limit = this.track.spacing < 0.75 ? 0.3 : 0.24;
+    const limit = this.track.spacing < 0.75 ? 0.22 : 0.18;
     if (this.frozen) {
       if (index > 0.62 * this.frozen.usual) {
         this.track.mask(this.frozen.since, this.lookedAt - 3);
@@ -414,7 +443,7 @@ export class Watch {
       const rate = -line.slope;
       const most = this.maxRates.get(window);
       if (rate > 1 && (!most || rate > most.rate)) this.maxRates.set(window, { rate, se: line.se });
-      else if (most && rate < 0.87 * most.rate && most.rate - rate > 2 * Math.hypot(line.se, most.se)) below = true;
+      else if (most && most.rate - rate > Math.max(0.07 * most.rate, 1.8 * Math.hypot(line.se, most.se))) below = true;
       if (window === 24 && rate > this.maxRate) this.maxRate = rate;
     }
     let fitted = false;
@@ -443,46 +472,42 @@ export class Watch {
       if (window === 12 || lower === Number.NEGATIVE_INFINITY) lower = gasLPerH(-line.slope - 1.64 * line.se, this.setup.volumeL);
     }
     const limit = this.swapGas();
-    hold(this.airlock, hour, this.peaked.on && upper < limit, 3, lower > 1.3 * limit);
+    // A cold vessel with sugar left is quiet only until somebody warms it.
+    const waiting = this.coldNow() && (this.levelNow() ?? 0) > this.zoneTop() + 8;
+    hold(this.airlock, hour, this.peaked.on && upper < limit && !waiting, 3, lower > 1.3 * limit || waiting);
   }
 
   private judgeEnd(hour: number): void {
     const level = this.levelNow();
+    const line24 = this.line(24);
     const line48 = this.line(48);
     const lower48 = line48 ? -line48.slope - 1.64 * line48.se : null;
-    const inside = level !== null && level <= this.zoneTop();
-    const settled = this.quietSinceAddition(60, 120);
-    const age = this.age;
+    const upper48 = line48 ? -line48.slope + 1.64 * line48.se : null;
+    const inside = level !== null && level <= this.zoneTop() && this.peaked.on;
+    // The tail is only asked where the fall is slow enough for it to matter.
+    const slow = inside && upper48 !== null && upper48 < 1.2;
+    const tail = slow ? this.tail() : null;
+    const most = tail ? tail.remaining + 1.28 * tail.sd : null;
 
-    let done = false;
-    if (inside && this.peaked.on && settled && level !== null) {
-      const short = Math.max(48, 0.15 * age);
-      if (this.stableOver(short, 24, short >= 72 ? 34 : 36)) {
-        const left = this.remaining();
-        done = left !== null && left < 1.8;
-      }
-      if (!done) done = this.stableOver(Math.max(72, 0.2 * age), 24, 34) !== null;
-    }
+    const done = most !== null && most < TERMINAL_POINTS && upper48! < 0.9 && this.quietSinceAddition(60, 120);
     const wasDone = this.terminal.on;
     hold(this.terminal, hour, done, 2, (lower48 !== null && lower48 > 0.8) || this.refermenting.on);
     if (this.terminal.on && !wasDone) this.plateau = level;
 
-    const line24 = this.line(24);
     let rackable = this.terminal.on;
-    if (!rackable && inside && settled && this.peaked.on && line24 && -line24.slope < 1.2 && -line24.slope + line24.se < 2) {
+    if (!rackable && inside && this.quietSinceAddition(60, 120) && line24 && -line24.slope < 1.2 && -line24.slope + line24.se < 2) {
       const left = this.remaining();
       rackable = left !== null && left < 2.4;
     }
     hold(this.rack, hour, rackable, 3, line24 !== null && -line24.slope - 1.64 * line24.se > 1.5);
 
-    let still = false;
-    const needed = Math.max(72, 0.2 * age);
-    if (inside && this.peaked.on && !this.rising.on && this.quietSinceAddition(120, 240) && !this.refermenting.on) {
-      if (this.stableOver(Math.min(168, needed), 18, 27)) {
-        const left = this.remaining();
-        still = left !== null && left < 1.2;
-      }
-    }
+    const still =
+      most !== null &&
+      most < BOTTLE_POINTS &&
+      upper48! < 0.5 &&
+      !this.rising.on &&
+      !this.refermenting.on &&
+      this.quietSinceAddition(120, 240);
     hold(this.bottle, hour, still, 4, (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on);
   }
 
@@ -490,15 +515,17 @@ export class Watch {
     const level = this.levelNow();
     if (level === null) return;
     const prior = this.fgPrior();
-    const limit = this.zoneTop() + 1.5;
+    const limit = this.stuckFloor();
     const line48 = this.line(48);
     const line72 = this.line(72);
     const slow = (line: Line | null, rate: number, upper: number): boolean =>
       line !== null && -line.slope < rate && -line.slope + 1.64 * line.se < upper;
     const settled = this.quietSinceAddition(60, 120);
     const flat = slow(line48, 0.5, 0.75) || slow(line72, 0.35, 0.5);
-    const line24 = this.line(24);
-    const moving = line24 !== null && -line24.slope - 1.64 * line24.se > 1;
+    const moving = [8, 12, 24].some((window) => {
+      const line = this.line(window);
+      return line !== null && -line.slope - (window === 24 ? 1.64 : 2.5) * line.se > 1;
+    });
     hold(this.stuck, hour, level > limit && flat && settled, 4, moving || level < limit);
     if (this.stuck.on) this.stuckCold = this.coldNow();
 

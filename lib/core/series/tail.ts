@@ -1,0 +1,137 @@
+import { medianInPlace } from './order';
+
+/** How much fall is still to come, judged from the end of the record alone. */
+export interface Tail {
+  /** Points still to fall. */
+  remaining: number;
+  sd: number;
+  /** Pace of the slowing, per day. */
+  pace: number;
+}
+
+/** Pace times age of a tail, log-normal about 6 (own simulations: 4 to 12, one in ten outside), our own prior. */
+const PACE_MEDIAN = 6;
+const PACE_SPREAD = 0.6;
+/** Paces tried, as multiples of 1/age: evenly spaced in the logarithm. */
+const PACES = [1, 1.6, 2.5, 4, 6.3, 10, 16, 25];
+/** Noise that hangs together over hours leaves fewer independent bins than there are. */
+const CORRELATION_MOST = 0.9;
+
+let size = 256;
+let weights = new Float64Array(size);
+let residuals = new Float64Array(size);
+let scratch = new Float64Array(size);
+let basis = new Float64Array(size);
+
+interface Line2 {
+  a: number;
+  b: number;
+  bb: number;
+}
+
+/** Weighted least squares of g on 1 and the basis. */
+function solve(g: Float64Array, from: number, n: number): Line2 | null {
+  let sw = 0;
+  let sf = 0;
+  let sg = 0;
+  let sff = 0;
+  let sfg = 0;
+  const g0 = g[from]!;
+  for (let i = 0; i < n; i += 1) {
+    const w = weights[i]!;
+    const f = basis[i]!;
+    const y = g[from + i]! - g0;
+    sw += w;
+    sf += w * f;
+    sg += w * y;
+    sff += w * f * f;
+    sfg += w * f * y;
+  }
+  const det = sw * sff - sf * sf;
+  if (!(det > 1e-12 * sw * sff)) return null;
+  const b = (sw * sfg - sf * sg) / det;
+  return { a: g0 + (sg - b * sf) / sw, b, bb: sw / det };
+}
+
+/**
+ * Falling end of a ferment as a + b·e^(−λt) over t[from..to) (h, ascending), `now` in
+ * h, the age in days. The pace λ is averaged over a prior that goes with the age:
+ * what took long to get here slows down slowly. b at `now` is what is still to
+ * come. Null with fewer than ten points.
+ */
+export function fitTail(t: Float64Array, g: Float64Array, from: number, to: number, now: number, ageDays: number): Tail | null {
+  const n = to - from;
+  if (n < 10 || !(ageDays > 0)) return null;
+  if (n > size) {
+    size = 2 * n;
+    weights = new Float64Array(size);
+    residuals = new Float64Array(size);
+    scratch = new Float64Array(size);
+    basis = new Float64Array(size);
+  }
+  weights.fill(1, 0, n);
+  let sigma = 0.3;
+  let rho = 0;
+  // Weights against bubbles from the middle pace; the shape matters little for them.
+  for (let round = 0; round < 3; round += 1) {
+    setBasis(t, from, n, now, PACE_MEDIAN / ageDays);
+    const fit = solve(g, from, n);
+    if (!fit) return null;
+    for (let i = 0; i < n; i += 1) {
+      residuals[i] = g[from + i]! - fit.a - fit.b * basis[i]!;
+      scratch[i] = Math.abs(residuals[i]!);
+    }
+    sigma = Math.max(0.08, 1.4826 * medianInPlace(scratch, 0, n));
+    for (let i = 0; i < n; i += 1) {
+      const r = Math.abs(residuals[i]!);
+      weights[i] = r <= 1.5 * sigma ? 1 : r > 6 * sigma + 0.5 ? 0 : (1.5 * sigma) / r;
+    }
+  }
+  let cross = 0;
+  let square = 0;
+  let before = 0;
+  for (let i = 0; i < n; i += 1) {
+    const r = Math.max(-2.5 * sigma, Math.min(2.5 * sigma, residuals[i]!));
+    square += r * r;
+    cross += i > 0 ? r * before : 0;
+    before = r;
+  }
+  rho = Math.min(CORRELATION_MOST, Math.max(0, (square > 0 ? cross / square : 0) + 2 / n));
+  const variance = (sigma * sigma * (1 + rho)) / (1 - rho);
+
+  let total = 0;
+  let mean = 0;
+  let second = 0;
+  let pace = 0;
+  let best = Number.POSITIVE_INFINITY;
+  const found: { b: number; v: number; cost: number; lambda: number }[] = [];
+  for (const multiple of PACES) {
+    const lambda = multiple / ageDays;
+    setBasis(t, from, n, now, lambda);
+    const fit = solve(g, from, n);
+    if (!fit) continue;
+    let sum = 0;
+    for (let i = 0; i < n; i += 1) {
+      const r = g[from + i]! - fit.a - fit.b * basis[i]!;
+      sum += weights[i]! * r * r;
+    }
+    const z = Math.log(multiple / PACE_MEDIAN) / PACE_SPREAD;
+    const cost = sum / (2 * variance) + (z * z) / 2;
+    best = Math.min(best, cost);
+    found.push({ b: fit.b, v: variance * fit.bb, cost, lambda });
+  }
+  for (const { b, v, cost, lambda } of found) {
+    const w = Math.exp(best - cost);
+    total += w;
+    mean += w * b;
+    second += w * (b * b + v);
+    pace += w * lambda;
+  }
+  if (!(total > 0)) return null;
+  mean /= total;
+  return { remaining: mean, sd: Math.sqrt(Math.max(0, second / total - mean * mean)), pace: pace / total };
+}
+
+function setBasis(t: Float64Array, from: number, n: number, now: number, lambda: number): void {
+  for (let i = 0; i < n; i += 1) basis[i] = Math.exp(Math.min(30, (lambda * (now - t[from + i]!)) / 24));
+}
