@@ -116,7 +116,9 @@ const CLOCK_MS = 30 * 60_000;
 /**
  * How far the sensor's clock is behind, ms: when even the quickest readings (5 %)
  * arrive more than half an hour after their time, or before it, the clock is
- * wrong. Rounded to 10 min, so that it stays put.
+ * wrong. Rounded to 10 min, so that it stays put. A wrong clock is late by the
+ * same for most readings; lags that differ are a backlog, sent when it could be,
+ * and the times in it are right.
  */
 function clockErrorOf(known: readonly Reading[]): number {
   const lags: number[] = [];
@@ -124,6 +126,7 @@ function clockErrorOf(known: readonly Reading[]): number {
   if (lags.length < 12) return 0;
   lags.sort((a, b) => a - b);
   const quick = lags[Math.floor(0.05 * lags.length)]!;
+  if (lags[Math.floor(0.5 * lags.length)]! - quick > CLOCK_MS) return 0;
   return Math.abs(quick) > CLOCK_MS ? Math.round(quick / 600_000) * 600_000 : 0;
 }
 
