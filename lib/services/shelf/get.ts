@@ -30,7 +30,8 @@ export async function getShelf(actor: Actor, query: z.infer<typeof shelfQuery>, 
   const width = Math.max(HOUR_S, (span.to - span.from) / LANE_POINTS);
   const [series, entries] = await Promise.all([laneSeries(ids, span.from, span.to, width), laneEntries(ids, from, to)]);
   const seriesOf = new Map(series.map((row) => [row.batchId, row]));
-  const entriesOf = Map.groupBy(entries, (entry) => entry.batchId);
+  const entriesOf = new Map<string, LaneEntryRow[]>(ids.map((id) => [id, []]));
+  for (const entry of entries) entriesOf.get(entry.batchId)?.push(entry);
   return {
     now: new Date(clock.now()).toISOString(),
     items: rows.map((row) => lane(row, actor, query, seriesOf.get(row.id), entriesOf.get(row.id) ?? [])),

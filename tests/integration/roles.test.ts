@@ -1,0 +1,240 @@
+import { randomUUID } from 'node:crypto';
+import { readdirSync, readFileSync } from 'node:fs';
+import { join } from 'node:path';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { Alert, Batch, Entry, SignIn } from '@/db/models';
+import { endpoints, type EndpointName } from '@/lib/contracts/endpoints';
+import type { Role } from '@/lib/core/roles';
+import type { Call } from '@/lib/core/types';
+import { useDatabase } from '../support/database';
+import { buildBatch, buildCellar, buildEntry, buildMember, buildSensor } from '../support/factories';
+import { call, sessionCookie, startWeb, type Web } from '../support/web';
+
+const ROUTES = join(import.meta.dirname, '../../app/api/v1');
+
+type Who = Role | 'nobody';
+const EVERYBODY: Who[] = ['keeper', 'brewer', 'hand', 'guest'];
+const NOT_GUESTS: Who[] = ['keeper', 'brewer', 'hand'];
+const BREWERS: Who[] = ['keeper', 'brewer'];
+
+/** One cellar's things, fresh for each request, so that one request does not decide the next. */
+interface Things {
+  batchId: string;
+  entryId: string;
+  sensorId: string;
+  alertId: string;
+  signInId: string;
+  cellarId: string;
+}
+
+interface Row {
+  /** Who may, with things of their own cellar; all others get 403, and nobody 401. */
+  may: readonly Who[];
+  /** What a good request answers. */
+  good: number;
+  /** Names a thing of a cellar: with another cellar's it is 404 for all who may. */
+  names?: boolean;
+  path(things: Things): string;
+  body?(things: Things): unknown;
+}
+
+const span = 'from=2026-03-01T00:00:00Z&to=2026-03-02T00:00:00Z';
+
+/** Written out by hand on purpose: it says what the policies should be, and is not made from them. */
+const TABLE: Record<Exclude<EndpointName, 'postTelemetry' | 'getOpenApi' | 'streamEvents'>, Row> = {
+  getMe: { may: EVERYBODY, good: 200, path: () => '/me' },
+  listSignIns: { may: EVERYBODY, good: 200, path: () => '/sign-ins' },
+  endAllSignIns: { may: EVERYBODY, good: 204, path: () => '/sign-ins' },
+  endSignIn: { may: EVERYBODY, good: 204, names: true, path: (t) => `/sign-ins/${t.signInId}` },
+  listMembers: { may: EVERYBODY, good: 200, path: () => '/members' },
+  chooseCellar: { may: EVERYBODY, good: 204, names: true, path: () => '/cellars/active', body: (t) => ({ cellar_id: t.cellarId }) },
+  getShelf: { may: EVERYBODY, good: 200, path: () => `/shelf?${span}` },
+  listBatches: { may: EVERYBODY, good: 200, path: () => '/batches' },
+  createBatch: { may: BREWERS, good: 201, path: () => '/batches', body: () => ({ name: 'Perry', kind: 'cider', volume_l: 4, vessel_l: 5 }) },
+  getBatch: { may: EVERYBODY, good: 200, names: true, path: (t) => `/batches/${t.batchId}` },
+  updateBatch: { may: BREWERS, good: 200, names: true, path: (t) => `/batches/${t.batchId}`, body: () => ({ name: 'Renamed' }) },
+  getSeries: { may: EVERYBODY, good: 200, names: true, path: (t) => `/batches/${t.batchId}/series` },
+  getAssessment: { may: EVERYBODY, good: 200, names: true, path: (t) => `/batches/${t.batchId}/assessment` },
+  getJudgement: { may: EVERYBODY, good: 200, names: true, path: (t) => `/batches/${t.batchId}/judgement` },
+  listVerdictChanges: { may: EVERYBODY, good: 200, names: true, path: (t) => `/batches/${t.batchId}/assessments` },
+  listEntries: { may: EVERYBODY, good: 200, names: true, path: (t) => `/batches/${t.batchId}/entries` },
+  createEntry: { may: NOT_GUESTS, good: 201, names: true, path: (t) => `/batches/${t.batchId}/entries`, body: () => ({ kind: 'note', at: '2026-03-01T00:00:00Z', text: 'Smells clean.' }) },
+  // The entry is somebody else's: a hand may take back only an own one (403 by the service, tested below).
+  removeEntry: { may: BREWERS, good: 204, names: true, path: (t) => `/batches/${t.batchId}/entries/${t.entryId}` },
+  listSensors: { may: NOT_GUESTS, good: 200, path: () => '/sensors' },
+  createSensor: { may: ['keeper'], good: 201, path: () => '/sensors', body: () => ({ name: 'Float' }) },
+  getSensor: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/sensors/${t.sensorId}` },
+  updateSensor: { may: BREWERS, good: 200, names: true, path: (t) => `/sensors/${t.sensorId}`, body: () => ({ batch_id: null }) },
+  listRefusals: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/sensors/${t.sensorId}/refusals` },
+  listAlerts: { may: NOT_GUESTS, good: 200, path: () => '/alerts' },
+  acknowledgeAlert: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/alerts/${t.alertId}/acknowledge`, body: () => ({}) },
+  resolveAlert: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/alerts/${t.alertId}/resolve`, body: () => ({}) },
+};
+
+const EVIDENCE: Call = { verdict: 'yes', kind: 'stuck', since: 0, expectedAt: null, headline: 'Warm it.', reason: 'No fall.', act: null, changesIt: null, evidence: [] };
+
+async function things(cellarId: string, personId: string): Promise<Things> {
+  const batch = await buildBatch({ cellarId, pitchedAt: new Date(Date.now() - 86_400_000) });
+  const other = await buildMember('brewer', { cellarId });
+  const entry = await buildEntry(batch, { text: 'x', personId: other.personId });
+  const { sensor } = await buildSensor({ batch });
+  const alert = await Alert.create({ cellarId, batchId: batch.id, call: 'stalled', kind: 'stuck', level: 'check', state: 'open', since: new Date(), openedAt: new Date(), evidence: EVIDENCE });
+  const signIn = await SignIn.create({ personId, expiresAt: new Date(Date.now() + 3_600_000) });
+  return { batchId: batch.id, entryId: entry.id, sensorId: sensor.identifier, alertId: alert.id, signInId: signIn.id, cellarId };
+}
+
+describe('who may do what', () => {
+  const db = useDatabase();
+  let web: Web;
+  beforeAll(async () => {
+    web = await startWeb({ databaseUrl: db.url });
+  }, 700_000);
+  afterAll(async () => {
+    await web?.stop();
+  });
+
+  it('has a row in the table for every route and method there is', () => {
+    const inTable = new Set<string>();
+    for (const endpoint of Object.values(endpoints)) inTable.add(`${endpoint.method} ${endpoint.path}`);
+    const inFolders = readdirSync(ROUTES, { recursive: true, encoding: 'utf8' }).filter((file) => file.endsWith('/route.ts')).flatMap((file) => {
+      const path = `/${file.slice(0, -'/route.ts'.length)}`.replace(/\[(\w+)\]/g, '{$1}');
+      const methods = [...readFileSync(join(ROUTES, file), 'utf8').matchAll(/export (?:const|async function|function) (GET|POST|PUT|PATCH|DELETE)\b/g)].map((match) => match[1]!);
+      expect(methods.length, file).toBeGreaterThan(0);
+      return methods.map((method) => `${method} ${path}`);
+    });
+    expect([...inTable].sort()).toEqual(inFolders.sort());
+    expect(Object.keys(TABLE).sort()).toEqual(
+      Object.keys(endpoints)
+        .filter((name) => !['postTelemetry', 'getOpenApi', 'streamEvents'].includes(name))
+        .sort(),
+    );
+  });
+
+  for (const [name, row] of Object.entries(TABLE)) {
+    const endpoint = endpoints[name as EndpointName];
+    it(`${endpoint.method} ${endpoint.path}: ${row.may.join(', ')}; another cellar’s is not found`, async () => {
+      const ask = (things: Things, cookie?: string) => call(web, endpoint.method, `/api/v1${row.path(things)}`, { cookie, body: row.body?.(things) });
+      const foreignKeeper = await buildMember('keeper');
+
+      for (const role of EVERYBODY as Role[]) {
+        const member = await buildMember(role);
+        const own = await things(member.cellarId, member.personId);
+        const { cookie } = await sessionCookie(member.personId);
+        if (row.names && row.may.includes(role)) {
+          const foreign = await things(foreignKeeper.cellarId, foreignKeeper.personId);
+          const answer = await ask(foreign, cookie);
+          expect(answer.status, `${role}, another cellar’s`).toBe(404);
+          expect(answer.body).toMatchObject({ type: 'urn:fallbright:problem:not-found', status: 404 });
+          expect(JSON.stringify(answer.body)).not.toContain(foreign.batchId);
+        }
+        const answer = await ask(own, cookie);
+        expect(answer.status, `${role}, own: ${JSON.stringify(answer.body)}`).toBe(row.may.includes(role) ? row.good : 403);
+        if (answer.status === 403) expect(answer.headers.get('content-type')).toBe('application/problem+json');
+      }
+      const answer = await ask(await things(foreignKeeper.cellarId, foreignKeeper.personId));
+      expect(answer.status, 'nobody').toBe(401);
+    });
+  }
+
+  it('shows lists of one cellar only', async () => {
+    const [mine, theirs] = [await buildMember('keeper'), await buildMember('keeper')];
+    await things(mine.cellarId, mine.personId);
+    const foreign = await things(theirs.cellarId, theirs.personId);
+    const { cookie } = await sessionCookie(mine.personId);
+    for (const path of ['/batches', '/sensors', '/alerts', '/members', `/shelf?${span}`]) {
+      const answer = await call(web, 'GET', `/api/v1${path}`, { cookie });
+      expect(answer.status).toBe(200);
+      const text = JSON.stringify(answer.body);
+      for (const secret of [foreign.batchId, foreign.sensorId, foreign.alertId, theirs.person.email]) expect(text, path).not.toContain(secret);
+    }
+  });
+
+  it('lets a hand log what they see, and not what changes the drink', async () => {
+    const hand = await buildMember('hand');
+    const batch = await buildBatch({ cellarId: hand.cellarId });
+    const { cookie } = await sessionCookie(hand.personId);
+    const log = (body: Record<string, unknown>) => call(web, 'POST', `/api/v1/batches/${batch.id}/entries`, { cookie, body: { at: '2026-03-01T00:00:00Z', ...body } }).then((answer) => answer.status);
+    expect(await log({ kind: 'reading', gravity: 1.02 })).toBe(201);
+    expect(await log({ kind: 'observation', text: 'Foam.' })).toBe(201);
+    expect(await log({ kind: 'neck', neck: 'airlock' })).toBe(201);
+    for (const body of [{ kind: 'rack', volume_l: 4 }, { kind: 'addition', sugar_g: 50 }, { kind: 'top_up', volume_l: 0.2 }, { kind: 'pitch' }, { kind: 'stabilise' }]) expect(await log(body), String(body.kind)).toBe(403);
+  });
+
+  it('lets a hand take back an own entry, and not another’s', async () => {
+    const hand = await buildMember('hand');
+    const batch = await buildBatch({ cellarId: hand.cellarId });
+    const own = await buildEntry(batch, { text: 'x', personId: hand.personId });
+    const other = await buildEntry(batch, { text: 'y', personId: (await buildMember('hand', { cellarId: hand.cellarId })).personId });
+    const { cookie } = await sessionCookie(hand.personId);
+    const list = await call(web, 'GET', `/api/v1/batches/${batch.id}/entries`, { cookie });
+    expect(Object.fromEntries(list.body.items.map((item: { id: string; mine: boolean }) => [item.id, item.mine]))).toEqual({ [own.id]: true, [other.id]: false });
+    expect((await call(web, 'DELETE', `/api/v1/batches/${batch.id}/entries/${other.id}`, { cookie })).status).toBe(403);
+    expect((await call(web, 'DELETE', `/api/v1/batches/${batch.id}/entries/${own.id}`, { cookie })).status).toBe(204);
+    expect((await call(web, 'DELETE', `/api/v1/batches/${batch.id}/entries/${own.id}`, { cookie })).status).toBe(404);
+    expect((await Entry.findByPk(own.id))?.removedBy).toBe(hand.personId);
+  });
+
+  it('lets a brewer move a sensor, and not rename or switch it off', async () => {
+    const brewer = await buildMember('brewer');
+    const batch = await buildBatch({ cellarId: brewer.cellarId });
+    const { sensor } = await buildSensor({ cellarId: brewer.cellarId });
+    const { cookie } = await sessionCookie(brewer.personId);
+    const change = (body: unknown) => call(web, 'PATCH', `/api/v1/sensors/${sensor.identifier}`, { cookie, body }).then((answer) => answer.status);
+    expect(await change({ batch_id: batch.id })).toBe(200);
+    expect(await change({ name: 'Mine' })).toBe(403);
+    expect(await change({ disabled: true })).toBe(403);
+  });
+
+  it('never puts another cellar’s sensor into a batch, by either road', async () => {
+    const keeper = await buildMember('keeper');
+    const batch = await buildBatch({ cellarId: keeper.cellarId });
+    const foreign = await buildSensor();
+    const foreignBatch = await buildBatch();
+    const own = await buildSensor({ cellarId: keeper.cellarId });
+    const { cookie } = await sessionCookie(keeper.personId);
+    expect((await call(web, 'POST', '/api/v1/batches', { cookie, body: { name: 'Perry', kind: 'cider', volume_l: 4, vessel_l: 5, sensor: foreign.sensor.identifier } })).status).toBe(404);
+    expect(await Batch.count({ where: { cellarId: keeper.cellarId } })).toBe(1);
+    expect((await call(web, 'PATCH', `/api/v1/sensors/${foreign.sensor.identifier}`, { cookie, body: { batch_id: batch.id } })).status).toBe(404);
+    expect((await call(web, 'PATCH', `/api/v1/sensors/${own.sensor.identifier}`, { cookie, body: { batch_id: foreignBatch.id } })).status).toBe(404);
+  });
+
+  it('acts in the chosen cellar with the role that the person has there', async () => {
+    const keeper = await buildMember('keeper');
+    const elsewhere = await buildCellar({ name: 'Elsewhere' });
+    await db.sequelize.query(`insert into memberships (cellar_id, person_id, role) values ($1, $2, 'guest')`, { bind: [elsewhere.id, keeper.personId] });
+    const { cookie } = await sessionCookie(keeper.personId);
+    const chosen = await call(web, 'POST', '/api/v1/cellars/active', { cookie, body: { cellar_id: elsewhere.id } });
+    const both = `${cookie}; ${chosen.headers.getSetCookie()[0]!.split(';')[0]!}`;
+    const me = await call(web, 'GET', '/api/v1/me', { cookie: both });
+    expect(me.body).toMatchObject({ cellar: { id: elsewhere.id, role: 'guest' } });
+    expect(me.body.cellars).toHaveLength(2);
+    expect((await call(web, 'POST', '/api/v1/batches', { cookie: both, body: { name: 'x', kind: 'cider', volume_l: 4, vessel_l: 5 } })).status).toBe(403);
+    // A cellar that the person has left, or never was in, falls back to one that is theirs.
+    const strange = await call(web, 'GET', '/api/v1/me', { cookie: `${cookie}; fallbright-cellar=${randomUUID()}` });
+    expect(strange.body.cellar.id).toBe(keeper.cellarId);
+  });
+
+  it('tells a person without a cellar so, and still lets them end their sign-ins', async () => {
+    const member = await buildMember('guest');
+    await db.sequelize.query('delete from memberships where person_id = $1', { bind: [member.personId] });
+    const { cookie } = await sessionCookie(member.personId);
+    expect((await call(web, 'GET', '/api/v1/me', { cookie })).status).toBe(403);
+    expect((await call(web, 'DELETE', '/api/v1/sign-ins', { cookie })).status).toBe(204);
+  });
+
+  it('hides alerts from guests on the batch too', async () => {
+    const guest = await buildMember('guest');
+    const own = await things(guest.cellarId, guest.personId);
+    const { cookie } = await sessionCookie(guest.personId);
+    expect((await call(web, 'GET', `/api/v1/batches/${own.batchId}`, { cookie })).body.alerts).toEqual([]);
+    const hand = await buildMember('hand', { cellarId: guest.cellarId });
+    const seen = await call(web, 'GET', `/api/v1/batches/${own.batchId}`, { cookie: (await sessionCookie(hand.personId)).cookie });
+    expect(seen.body.alerts).toMatchObject([{ id: own.alertId, call: 'stalled', state: 'open', taken_by: null }]);
+  });
+
+  it('takes readings only from a sensor’s own credential, not from a person', async () => {
+    const keeper = await buildMember('keeper');
+    const { cookie } = await sessionCookie(keeper.personId);
+    expect((await call(web, 'POST', '/api/v1/telemetry', { cookie, body: { gravity: 1.05, temperature: 20 } })).status).toBe(401);
+  });
+});
