@@ -72,10 +72,10 @@ export function Lane({ view, span, now, timeZone, staleAt, mayTake, layout }: La
       style={{ minHeight: HEIGHT[group] }}
     >
       <div className={`grid grid-cols-[94px_minmax(0,1fr)] gap-x-[18px] pr-[14px] ${middle ? 'row-span-2' : ''}`}>
-        <div className="relative self-end pl-[17px]" style={{ paddingBottom: low ? 3 : 5 }}>
+        <div className={`pl-[17px] ${middle ? 'self-start pt-2' : 'self-end'}`} style={{ paddingBottom: low ? 3 : 5 }}>
           <Vessel vessel={vesselOf(lane, rackedWhenFinished(view))} height={VESSEL[group]} />
         </div>
-        <div className={`flex min-w-0 flex-col justify-between ${low ? 'pb-1 pt-[3px]' : group === 'now' ? 'pb-[19px] pt-[6px]' : 'pb-[14px] pt-[6px]'}`}>
+        <div className={`flex min-w-0 flex-col ${middle ? 'gap-2' : 'justify-between'} ${low ? 'pb-1 pt-[3px]' : group === 'now' ? 'pb-[19px] pt-[6px]' : 'pb-[14px] pt-[6px]'}`}>
           <Name view={view} className={low ? 'type-name-low' : 'type-name'} />
           <div className="flex items-end justify-between gap-2">
             <Meta view={view} now={now} timeZone={timeZone} low={low} />
@@ -113,7 +113,7 @@ export function PhoneLane({ view, span, now, timeZone, staleAt, mayTake }: LaneP
               <Name view={view} className="type-name min-w-0" />
               <span className="type-fig-lg">{figures.gravity}</span>
             </div>
-            <div className="flex items-baseline justify-between gap-3">
+            <div className="flex items-center justify-between gap-3">
               <span className="type-label flex flex-wrap items-center gap-x-2 text-ink2">
                 <span aria-hidden className="leading-none">
                   <State state={attention.state} />
@@ -122,7 +122,7 @@ export function PhoneLane({ view, span, now, timeZone, staleAt, mayTake }: LaneP
               </span>
               <span className="type-label whitespace-nowrap text-ink2">{staleAt === null ? dayOf(lane.pitched_at, now, timeZone) : figures.under}</span>
             </div>
-            <p className={`mt-1 ${group === 'now' ? 'text-[1.1875rem]/[1.5rem] font-[670]' : low ? 'text-[0.9375rem]/[1.25rem] font-[640]' : 'text-[1.0625rem]/[1.375rem] font-[660]'}`}>
+            <p className={`mt-1 text-balance ${group === 'now' ? 'text-[1.125rem]/[1.4375rem] font-[670]' : low ? 'text-[0.9375rem]/[1.25rem] font-[640]' : 'text-[1.0625rem]/[1.375rem] font-[660]'}`}>
               <Sentence strong>{headline.replace(/\.$/, '')}</Sentence>
             </p>
             <div className="flex items-end justify-between gap-3">
@@ -134,7 +134,7 @@ export function PhoneLane({ view, span, now, timeZone, staleAt, mayTake }: LaneP
           </div>
         </div>
       </div>
-      <LanePicture lane={lane} span={span} now={now} timeZone={timeZone} height={62} narrow />
+      <LanePicture lane={lane} span={span} now={now} timeZone={timeZone} height={62} />
     </li>
   );
 }

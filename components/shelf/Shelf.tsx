@@ -1,7 +1,6 @@
 'use client';
 
 import { useCallback, useMemo, useRef, useState } from 'react';
-import { calendarOf } from '@/components/charts/calendar';
 import { clock } from '@/components/charts/zone';
 import { ErrorState } from '@/components/ui/Notice';
 import { Button, LinkButton } from '@/components/ui/Button';
@@ -77,7 +76,6 @@ export function Shelf() {
 
   const phone = layout === 'strip';
   const span = { from: now - DAYS[layout].back * DAY, to: now + DAYS[layout].ahead * DAY };
-  const calendar = calendarOf(span, timeZone, phone ? 390 : 730, now, phone);
   const staleAt = live.state === 'offline' || error ? Date.parse(shelf.now) / 1000 : null;
   const today = { jobs, ticks, nothing: nothingDue(views, now, timeZone), now, timeZone, mayTake, loading: loading || ((open.loading || taken.loading) && may('alerts.read')) };
   return (
@@ -100,7 +98,7 @@ export function Shelf() {
         className={`sticky top-0 z-10 grid h-[34px] border-b-[1.5px] border-ink bg-sheet ${phone ? 'grid-cols-1' : layout === 'middle' ? 'grid-cols-[var(--vessel)_minmax(0,1fr)]' : 'grid-cols-[var(--vessel)_minmax(0,1fr)_var(--call)]'}`}
       >
         {!phone && <div className="type-label flex items-center pl-(--margin) text-ink2">Vessel</div>}
-        <ShelfAxis calendar={calendar} span={span} now={now} />
+        <ShelfAxis span={span} now={now} timeZone={timeZone} />
         {layout === 'wide' && <div className="type-label flex items-center pl-[18px] text-ink2">Call</div>}
       </div>
       <div ref={list} onPointerEnter={(event) => event.pointerType === 'mouse' && setHeld(placesOf(groups))} onPointerLeave={() => setHeld(null)}>

@@ -1,11 +1,17 @@
-import type { Calendar } from '@/components/charts/calendar';
+'use client';
+
+import { useRef } from 'react';
+import { calendarOf } from '@/components/charts/calendar';
 import type { Span } from '@/components/charts/picture';
+import { useWidth } from '@/components/ui/width';
 
 /** The shared calendar's days: weekends tinted, today an ink block. The lanes below continue its weekends. */
-export function ShelfAxis({ calendar, span, now }: { calendar: Calendar; span: Span; now: number }) {
+export function ShelfAxis({ span, now, timeZone }: { span: Span; now: number; timeZone: string }) {
+  const cell = useRef<HTMLDivElement>(null);
+  const calendar = calendarOf(span, timeZone, useWidth(cell, 728), now, true);
   const share = (at: number) => ((at - span.from) / (span.to - span.from)) * 100;
   return (
-    <div aria-hidden className="relative h-full overflow-x-clip font-mono text-[0.75rem] leading-[0.8125rem]">
+    <div ref={cell} aria-hidden className="relative h-full overflow-x-clip font-mono text-[0.75rem] leading-[0.8125rem]">
       {calendar.weekends.map((weekend) => (
         <span key={weekend.from} className="absolute top-0 -bottom-[1.5px] bg-well" style={{ left: `${share(weekend.from)}%`, width: `${share(weekend.to) - share(weekend.from)}%` }} />
       ))}

@@ -72,7 +72,7 @@ function JobWho({ job, ticks, mayTake }: { job: Job; ticks: JobTicks; mayTake: b
 function countWords(jobs: readonly Job[]): string {
   const taken = jobs.filter((job) => job.who !== null).length;
   const open = jobs.length - taken;
-  return [open > 0 || taken === 0 ? `${open} to do` : null, taken > 0 ? `${taken} in hand` : null].filter(Boolean).join(', ');
+  return [open > 0 ? `${open} to do` : null, taken > 0 ? `${taken} in hand` : null].filter((part) => part !== null).join(', ');
 }
 
 /** The day's jobs above the lanes: late ones first, in madder with the word. */
@@ -81,7 +81,7 @@ export function Today({ jobs, ticks, nothing, now, timeZone, mayTake, loading }:
   const more = jobs.length - shown.length;
   return (
     <section aria-labelledby="today" className="grid min-h-20 border-b bg-desk max-wide:grid-cols-2 wide:grid-cols-[200px_repeat(5,minmax(0,1fr))]">
-      <div className="flex flex-col justify-center py-2 pl-(--margin) pr-3">
+      <div className="flex flex-col justify-center py-1.5 pl-(--margin) pr-3 max-wide:col-span-full">
         <h2 id="today" className="mb-0.5 text-[1.4375rem]/[1.625rem] font-[780]">
           Today
         </h2>
@@ -104,7 +104,7 @@ export function Today({ jobs, ticks, nothing, now, timeZone, mayTake, loading }:
         <p className="col-span-full flex items-center border-l px-4 py-3 text-[0.96875rem]/[1.3125rem] wide:col-span-5">{!loading && <span><Sentence>{nothing}</Sentence></span>}</p>
       ) : (
         shown.map((job) => (
-          <div key={job.key} className="flex min-w-0 gap-3 border-l px-3 pb-2 pt-[9px] max-wide:border-t">
+          <div key={job.key} className="flex min-w-0 gap-3 px-3 pb-1.5 pt-[9px] max-wide:border-t max-wide:odd:border-l max-wide:even:pl-(--margin) wide:border-l">
             <JobBox job={job} ticks={ticks} mayTake={mayTake} />
             <div className="min-w-0 flex-1">
               <JobTime job={job} />
@@ -130,9 +130,9 @@ export function PhoneToday({ jobs, ticks, nothing, mayTake, loading }: TodayProp
   return (
     <section aria-label="Today" className="border-b bg-desk px-(--margin)">
       {shown.map((job) => (
-        <div key={job.key} className="flex items-center gap-3 border-b py-1">
+        <div key={job.key} className="flex items-center border-b py-1">
           <JobBox job={job} ticks={ticks} mayTake={mayTake} />
-          <div className="min-w-0 flex-1 -ml-2">
+          <div className="-ml-3 mr-3 min-w-0 flex-1">
             <p className="type-label text-ink2">
               <span className={job.late ? 'text-madder' : 'text-ink'} style={{ fontWeight: 700 }}>
                 {job.time}
@@ -147,7 +147,7 @@ export function PhoneToday({ jobs, ticks, nothing, mayTake, loading }: TodayProp
           ) : (
             job.alertId !== null &&
             mayTake && (
-              <Button onClick={() => void ticks.take(job)} disabled={ticks.waiting.has(job.key)} aria-label={`Take it: ${job.text}`} className="my-1">
+              <Button onClick={() => void ticks.take(job)} disabled={ticks.waiting.has(job.key)} aria-label={`Take it: ${job.text}`}>
                 Take it
               </Button>
             )

@@ -60,11 +60,11 @@ export function Header({ glance, places }: { glance: CellarGlance; places: reado
   const { cellar, vessels, heardAt, timeZone } = glance;
   const place = cellar && `${cellar}${vessels === null ? '' : ` · ${vessels} ${vessels === 1 ? 'vessel' : 'vessels'}`}`;
   return (
-    <header className={`flex min-h-(--header) items-center gap-x-[34px] border-b-[1.5px] border-ink px-(--margin) ${ownHead ? 'max-strip:hidden' : ''}`}>
+    <header className={`flex min-h-(--header) items-center gap-x-3 border-b-[1.5px] border-ink px-(--margin) ${ownHead ? 'max-strip:hidden' : ''}`}>
       <Link href="/shelf" className="no-underline" aria-label="Fallbright, to the shelf">
         <Wordmark />
       </Link>
-      <div className="hidden self-stretch strip:flex">
+      <div className="ml-[22px] hidden self-stretch strip:flex">
         <NavLinks places={places} />
       </div>
       <div className="type-label ml-auto hidden items-center gap-x-7 text-ink2 strip:flex">
@@ -73,8 +73,8 @@ export function Header({ glance, places }: { glance: CellarGlance; places: reado
         <DayNight />
         <PersonMenu glance={glance} />
       </div>
-      <div className="type-label ml-auto py-1 text-right text-ink2 strip:hidden" style={{ lineHeight: '1rem' }}>
-        <div>{cellar && `${cellar}${vessels === null ? '' : `, ${vessels} ${vessels === 1 ? 'vessel' : 'vessels'}`}`}</div>
+      <div className="type-label ml-auto min-w-0 py-1 text-right text-ink2 strip:hidden" style={{ lineHeight: '1rem' }}>
+        <div className="truncate">{cellar && `${cellar}${vessels === null ? '' : `, ${vessels} ${vessels === 1 ? 'vessel' : 'vessels'}`}`}</div>
         <div>{now !== null && `${dayName(now / 1000, timeZone)}, ${clock(now / 1000, timeZone)}`}</div>
       </div>
     </header>

@@ -1,0 +1,86 @@
+'use client';
+
+import Link from 'next/link';
+import { useState } from 'react';
+import { dayName } from '@/components/charts/zone';
+import { Button } from '@/components/ui/Button';
+import { Select } from '@/components/ui/Field';
+import { FormError } from '@/components/ui/Notice';
+import type { SensorBody, UpdateSensor } from '@/lib/contracts/sensors';
+import { useBatches } from '@/lib/client/batches';
+import { ClientError } from '@/lib/client/fetcher';
+import { updateSensor } from '@/lib/client/sensors';
+
+/** One change of a sensor, with what is said while it runs and when it fails. */
+export function useSensorChange(id: string) {
+  const [busy, setBusy] = useState(false);
+  const [failed, setFailed] = useState<string | null>(null);
+  async function change(input: UpdateSensor): Promise<boolean> {
+    setBusy(true);
+    setFailed(null);
+    try {
+      await updateSensor(id, input);
+      return true;
+    } catch (error) {
+      setFailed(error instanceof ClientError ? error.message : 'Nothing was changed. Try again.');
+      return false;
+    } finally {
+      setBusy(false);
+    }
+  }
+  return { busy, failed, change };
+}
+
+/** Which vessel it floats in: put in, moved, taken out. */
+export function Placement({ sensor, mayAssign, timeZone }: { sensor: SensorBody; mayAssign: boolean; timeZone: string }) {
+  const { batches } = useBatches({ state: 'working' });
+  const { busy, failed, change } = useSensorChange(sensor.id);
+  const [chosen, setChosen] = useState('');
+  const others = (batches ?? []).filter((batch) => batch.id !== sensor.batch?.id);
+  const taken = others.find((batch) => batch.id === chosen)?.sensor;
+  return (
+    <section aria-label="In which vessel" className="flex flex-col gap-3 border-b px-(--margin) py-4">
+      <p className="type-body">
+        {sensor.batch ? (
+          <>
+            In{' '}
+            <Link href={`/batches/${sensor.batch.id}`} className="font-semibold underline underline-offset-2">
+              {sensor.batch.name}
+            </Link>{' '}
+            <span className="fig">since {dayName(Date.parse(sensor.batch.since) / 1000, timeZone)}</span>. What it sends counts for this batch.
+          </>
+        ) : (
+          'In no vessel. What it sends is kept and counts for no batch.'
+        )}
+      </p>
+      {failed && <FormError>{failed}</FormError>}
+      {mayAssign && (
+        <div className="flex flex-wrap items-end gap-2">
+          <Select
+            label={sensor.batch ? 'move it to' : 'put it in'}
+            value={chosen}
+            onChange={(event) => setChosen(event.target.value)}
+            className="min-w-48 flex-1"
+            hint={taken ? `${taken.name} is in it now` : undefined}
+          >
+            <option value="">choose a batch</option>
+            {others.map((batch) => (
+              <option key={batch.id} value={batch.id}>
+                {batch.name}
+                {batch.tag === null ? '' : `, tag ${batch.tag}`}
+              </option>
+            ))}
+          </Select>
+          <Button disabled={busy || chosen === ''} onClick={() => void change({ batch_id: chosen }).then((done) => done && setChosen(''))} className={taken ? 'mb-[22px]' : ''}>
+            {sensor.batch ? 'Move it' : 'Put it in'}
+          </Button>
+          {sensor.batch && (
+            <Button look="quiet" disabled={busy} onClick={() => void change({ batch_id: null })} className={taken ? 'mb-[22px]' : ''}>
+              Take it out
+            </Button>
+          )}
+        </div>
+      )}
+    </section>
+  );
+}

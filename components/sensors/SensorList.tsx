@@ -1,0 +1,130 @@
+'use client';
+
+import Link from 'next/link';
+import { LinkButton } from '@/components/ui/Button';
+import { Haze } from '@/components/ui/Haze';
+import { EmptyState, ErrorState } from '@/components/ui/Notice';
+import { useNow } from '@/components/ui/now';
+import { PageHead } from '@/components/ui/Page';
+import { State } from '@/components/ui/StateMark';
+import type { SensorBody } from '@/lib/contracts/sensors';
+import { useMe } from '@/lib/client/me';
+import { useSensors } from '@/lib/client/sensors';
+import { cellWords, gravityWords, heardWords, linkWords, sensorState, temperatureWords } from './words';
+
+const COLUMNS = 'strip:grid strip:grid-cols-[8.5rem_minmax(8rem,1.3fr)_minmax(8rem,1.4fr)_6.5rem_8.5rem_4.5rem_8.5rem_5rem] strip:items-center strip:gap-x-4';
+
+/** A figure under its name on a phone, in its column elsewhere. */
+function Cell({ name, children, right = false }: { name: string; children: React.ReactNode; right?: boolean }) {
+  return (
+    <div className={`type-label min-w-0 max-strip:flex max-strip:justify-between max-strip:gap-3 ${right ? 'strip:text-right' : ''}`}>
+      <dt className="text-ink2 strip:hidden">{name}</dt>
+      <dd className="min-w-0 text-ink">{children}</dd>
+    </div>
+  );
+}
+
+function Row({ sensor, now, timeZone }: { sensor: SensorBody; now: number; timeZone: string }) {
+  const { state, word } = sensorState(sensor, now);
+  return (
+    <li className="relative border-b border-rule px-(--margin) py-3 hover:bg-lit strip:py-0">
+      <div className={`${COLUMNS} strip:min-h-[52px]`}>
+        <span className="max-strip:hidden">
+          <State state={state} word={word} />
+        </span>
+        <div className="flex min-w-0 flex-wrap items-baseline justify-between gap-x-3">
+          <h2 className="type-name-low min-w-0 break-words">
+            <Link href={`/sensors/${sensor.id}`} className="no-underline after:absolute after:inset-0 after:content-[''] focus-visible:outline-none focus-visible:after:outline-3 focus-visible:after:-outline-offset-3 focus-visible:after:outline-mercury">
+              {sensor.name}
+            </Link>
+          </h2>
+          <span className="strip:hidden">
+            <State state={state} word={word} />
+          </span>
+        </div>
+        <dl className="contents">
+          <Cell name="in">
+            {sensor.batch ? (
+              <Link href={`/batches/${sensor.batch.id}`} className="relative z-10 block truncate font-serif text-[0.875rem] underline-offset-2 hover:underline">
+                {sensor.batch.name}
+              </Link>
+            ) : (
+              <span className="text-ink2">no vessel</span>
+            )}
+          </Cell>
+          <Cell name="last heard">{heardWords(sensor, now, timeZone)}</Cell>
+          <Cell name="last word">
+            {sensor.last ? (
+              <>
+                <b className="font-semibold">{gravityWords(sensor.last.gravity)}</b> {temperatureWords(sensor.last.temperature)}
+              </>
+            ) : (
+              '–'
+            )}
+          </Cell>
+          <Cell name="cell">{cellWords(sensor.last?.battery)}</Cell>
+          <Cell name="link">{linkWords(sensor.last?.signal)}</Cell>
+          <Cell name="refused, 24 h" right>
+            <span className={sensor.refused_24h > 0 ? 'font-semibold text-ochre' : 'text-ink2'}>{sensor.refused_24h}</span>
+          </Cell>
+        </dl>
+      </div>
+    </li>
+  );
+}
+
+/** All sensors of the cellar: where they are, when they were heard, how they are. */
+export function SensorList() {
+  const { me, may } = useMe();
+  const { sensors, error, loading, retry } = useSensors({ limit: 200 });
+  const nowMs = useNow();
+  const timeZone = me?.cellar.time_zone ?? 'UTC';
+  const now = (nowMs ?? 0) / 1000;
+  const silent = sensors?.filter((sensor) => sensorState(sensor, now).state === 'Silent').length ?? 0;
+  const create = may('sensors.manage') && (
+    <LinkButton href="/sensors/new" look="first">
+      Add a sensor
+    </LinkButton>
+  );
+  return (
+    <>
+      <PageHead title="Sensors" meta={sensors && sensors.length > 0 && `${sensors.length} in this cellar${silent > 0 ? `, ${silent} silent` : ''}`}>
+        {sensors && sensors.length > 0 && create}
+      </PageHead>
+      {loading && (
+        <div className="px-(--margin) py-4">
+          <Haze height={120} label="Loading the sensors" />
+        </div>
+      )}
+      {error && !sensors && (
+        <ErrorState title={error.status === 403 ? 'Sensors are not shown to guests' : 'The sensors did not load'} {...(error.status === 403 ? {} : { onRetry: retry })}>
+          {error.message}
+        </ErrorState>
+      )}
+      {sensors?.length === 0 && (
+        <EmptyState title="No sensor yet" action={create}>
+          A float sensor tells gravity and temperature by itself, over MQTT or HTTP. Readings by hand work without one.
+        </EmptyState>
+      )}
+      {sensors && sensors.length > 0 && (
+        <>
+          <div aria-hidden className={`type-label border-b bg-desk px-(--margin) py-0.5 text-ink2 max-strip:hidden ${COLUMNS}`}>
+            <span>state</span>
+            <span>sensor</span>
+            <span>in</span>
+            <span>last heard</span>
+            <span>last word</span>
+            <span>cell</span>
+            <span>link</span>
+            <span className="text-right">refused</span>
+          </div>
+          <ul>
+            {sensors.map((sensor) => (
+              <Row key={sensor.id} sensor={sensor} now={now} timeZone={timeZone} />
+            ))}
+          </ul>
+        </>
+      )}
+    </>
+  );
+}
