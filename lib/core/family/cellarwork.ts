@@ -84,7 +84,7 @@ export function split(from: Contents, litres: readonly number[]): { parts: reado
   }
   const parts = litres.map((l) => portion(from, l / available));
   const rest = minus(from, blend(parts));
-  return { parts, rest: wanted >= available ? NOTHING : rest };
+  return { parts, rest: wanted >= available * (1 - 1e-9) ? NOTHING : rest };
 }
 
 /** Blends what came from several batches into one vessel. Volumes shrink a little when strong meets weak; the masses do not. */

@@ -34,7 +34,6 @@ export function juice(key: string, name: string, brix: Range, fermentableShare: 
   return ingredient(key, name, 'juice', {
     extractShare: { lo: brix.lo / 100, value: brix.value / 100, hi: brix.hi / 100 },
     fermentableShare,
-    densityGPerMl: between(1.035, 1.09),
     yanMgPerG,
   });
 }

@@ -29,7 +29,7 @@ export interface Ingredient extends Source {
   insolubleShare: number;
   /** Part of the extract that yeast can use. */
   fermentableShare: Range;
-  /** As measured in a jug or a level spoon, g/ml; null where nobody measures it so. */
+  /** As measured in a jug or a level spoon, g/ml; null where nobody measures it so, and for a juice, whose °Bx tells it. */
   densityGPerMl: Range | null;
   /** One piece, jar or tablet, g, and what one is called. */
   each: { name: string; grams: Range } | null;

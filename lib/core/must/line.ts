@@ -1,4 +1,5 @@
 /** What one line of a must sheet brings. */
+import { sucroseDensity } from '../gravity/density';
 import { exactly, product, times, type Range } from '../units/range';
 import { GRAMS_PER, isMassUnit, isVolumeUnit, LITRES_PER } from '../units/measures';
 import type { Amount, Ingredient, MustLine } from './ingredients';
@@ -9,13 +10,14 @@ const PULP_DENSITY = 1.5;
 /** Why a line cannot be weighed. */
 export class UnweighableLine extends RangeError {}
 
-/** Grams in an amount of an ingredient; an ingredient without a density or a weight of one says so. */
+/** Grams in an amount of an ingredient; a juice weighs what its °Bx says; anything else without a density or a weight of one says so. */
 export function gramsOf(amount: Amount, ingredient: Ingredient): Range {
   const { quantity, unit } = amount;
   if (isMassUnit(unit)) return times(quantity, GRAMS_PER[unit]);
   if (isVolumeUnit(unit)) {
-    if (!ingredient.densityGPerMl) throw new UnweighableLine(`${ingredient.name}: weigh it; nobody knows what a spoon or a jug of it weighs`);
-    return product(times(quantity, LITRES_PER[unit] * 1000), ingredient.densityGPerMl);
+    const density = ingredient.densityGPerMl ?? (ingredient.kind === 'juice' ? exactly(sucroseDensity(ingredient.extractShare.value, 20) / 1000) : null);
+    if (!density) throw new UnweighableLine(`${ingredient.name}: weigh it; nobody knows what a spoon or a jug of it weighs`);
+    return product(times(quantity, LITRES_PER[unit] * 1000), density);
   }
   if (!ingredient.each) throw new UnweighableLine(`${ingredient.name}: say what one of them weighs`);
   return product(quantity, ingredient.each.grams);

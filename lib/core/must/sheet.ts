@@ -66,4 +66,10 @@ export interface MustOutcome {
   notes: readonly MustNote[];
 }
 
-export type MustResult = { ok: true; outcome: MustOutcome } | { ok: false; problems: readonly { line: string | null; sentence: string }[] };
+export interface MustProblem {
+  /** The line it is about; null for the whole. */
+  line: string | null;
+  sentence: string;
+}
+
+export type MustResult = { ok: true; outcome: MustOutcome } | { ok: false; problems: readonly MustProblem[] };

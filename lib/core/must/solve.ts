@@ -1,7 +1,14 @@
 /** Scaling a sheet, and working back from what is wanted to the amount of one line. */
+import { abvBalling } from '../strength/strength';
 import { times } from '../units/range';
-import { reckonMust } from './outcome';
-import type { MustOutcome, MustSheet } from './sheet';
+import { problemsOf } from './outcome';
+import type { MustSheet } from './sheet';
+import { inputsOfSheet, stateAt, type MustState } from './state';
+
+/** The must at the middle of its ranges; null where it cannot be reckoned. */
+function middleOf(sheet: MustSheet): MustState | null {
+  return problemsOf(sheet).length > 0 ? null : stateAt(sheet, inputsOfSheet(sheet).map((r) => r.value));
+}
 
 /** The same must, more or less of it: every amount and the water boiled away times a factor. */
 export function scaleSheet(sheet: MustSheet, factor: number): MustSheet {
@@ -18,9 +25,9 @@ export function scaleSheet(sheet: MustSheet, factor: number): MustSheet {
  * pulp. Null where the sheet cannot be reckoned.
  */
 export function scaleToFill(sheet: MustSheet, fillL: number, vesselL: number | null = sheet.vesselL): MustSheet | null {
-  const result = reckonMust(sheet);
-  if (!result.ok || !(fillL > 0)) return null;
-  return { ...scaleSheet(sheet, fillL / result.outcome.fillL.value.value), vesselL };
+  const middle = middleOf(sheet);
+  if (!middle || !(fillL > 0)) return null;
+  return { ...scaleSheet(sheet, fillL / (middle.volumeL + middle.pulpL)), vesselL };
 }
 
 /** What is wanted of the must: its original gravity, SG, or its strength by Balling, % vol. */
@@ -41,36 +48,42 @@ export function amountFor(sheet: MustSheet, lineId: string, wanted: Wanted): Sol
   if (!line || !(line.amount.quantity.value > 0)) return { ok: false, sentence: 'Give the line an amount to start from.' };
   const target = 'original' in wanted ? wanted.original : wanted.abvPercent;
   const at = (factor: number): number | null => {
-    const result = reckonMust(withAmount(sheet, lineId, factor));
-    return result.ok ? reached(result.outcome, wanted) : null;
+    const middle = middleOf(withAmount(sheet, lineId, factor));
+    return middle && reached(middle, wanted);
   };
-  const none = at(0);
-  const most = highestReckonable(at);
-  if (none === null || most === null) return { ok: false, sentence: 'The rest of the must cannot be reckoned.' };
-  const rising = most.value > none;
-  const [low, high] = rising ? [none, most.value] : [most.value, none];
+  const [least, most] = reckonable(at);
+  if (!least || !most) return { ok: false, sentence: 'The rest of the must cannot be reckoned.' };
+  const rising = most.value > least.value;
+  const [low, high] = rising ? [least.value, most.value] : [most.value, least.value];
   if (target < low || target > high) {
     return { ok: false, sentence: `With ${line.ingredient.name} alone it comes between ${shown(low, wanted)} and ${shown(high, wanted)}.` };
   }
-  let [lo, hi] = [0, most.factor];
+  let [lo, hi] = [least.factor, most.factor];
   for (let i = 0; i < 60 && hi - lo > 1e-6 * hi; i += 1) {
     const mid = (lo + hi) / 2;
     const value = at(mid);
-    if (value !== null && value < target === rising) lo = mid;
+    if (value !== null && (value < target) === rising) lo = mid;
     else hi = mid;
   }
   return { ok: true, sheet: withAmount(sheet, lineId, hi), factor: hi };
 }
 
-/** The largest factor, of a doubling row, at which the must still makes sense (below 60 °Bx). */
-function highestReckonable(at: (factor: number) => number | null): { factor: number; value: number } | null {
-  let best: { factor: number; value: number } | null = null;
-  for (let factor = 1 / 64; factor <= MOST_TIMES; factor *= 2) {
+interface Tried {
+  factor: number;
+  value: number;
+}
+
+/** Least and most, of none and a doubling row of factors, at which the must makes sense: some water, and not over 45 °Bx. */
+function reckonable(at: (factor: number) => number | null): [Tried | null, Tried | null] {
+  let [least, most]: [Tried | null, Tried | null] = [null, null];
+  for (let factor = 0; factor <= MOST_TIMES; factor = factor === 0 ? 1 / 64 : factor * 1.5) {
     const value = at(factor);
-    if (value === null) break;
-    best = { factor, value };
+    if (value === null && most) break;
+    if (value === null) continue;
+    least ??= { factor, value };
+    most = { factor, value };
   }
-  return best;
+  return [least, most];
 }
 
 function withAmount(sheet: MustSheet, lineId: string, factor: number): MustSheet {
@@ -80,7 +93,7 @@ function withAmount(sheet: MustSheet, lineId: string, factor: number): MustSheet
   };
 }
 
-const reached = (outcome: MustOutcome, wanted: Wanted): number =>
-  'original' in wanted ? outcome.originalGravity.value.value : outcome.strength.balling.value.value;
+const reached = (state: MustState, wanted: Wanted): number =>
+  'original' in wanted ? state.originalGravity : abvBalling(state.originalGravity, state.finalGravity);
 
 const shown = (value: number, wanted: Wanted): string => ('original' in wanted ? value.toFixed(3) : `${value.toFixed(1)} % vol`);
