@@ -286,6 +286,30 @@ export class Track {
     return { hour: bins.hour[best]!, points: Math.abs(near) < Math.abs(wide) ? near : wide };
   }
 
+  /**
+   * Looks for sugar that nobody logged: an upward jump 8 to 11 h ago that is still
+   * there once any burst of bubbles (under 8 h) would be over. It may come at any
+   * pace of the fall, which hides smaller steps.
+   */
+  findSugar(hour: number, notBefore: number): { hour: number; points: number } | null {
+    const { bins } = this;
+    for (let i = binFrom(bins, hour - 14); i < bins.n && bins.hour[i]! <= hour - 11; i += 1) {
+      if (i < 6 || bins.hour[i]! < notBefore + 24 || bins.masked[i] || bins.t[i]! - bins.t[i - 1]! > Math.max(3, 2.5 * this.spacing)) continue;
+      const jump = Math.min(bins.g[i]!, bins.g[i + 1] ?? -99) - Math.max(bins.g[i - 1]!, bins.g[i - 2]!);
+      if (jump < 3.5) continue;
+      const before = this.line(bins.hour[i]! - 20, bins.hour[i]!, 0.6);
+      const at = bins.hour[i]!;
+      const soon = this.level(at, at + 4);
+      const late = this.level(at + 8, hour + 1);
+      if (!before || soon === null || late === null) continue;
+      const drawn = (h: number): number => before.level + (before.slope / 24) * (h - before.middle);
+      const now = late - drawn((at + 8 + hour) / 2);
+      const then = soon - drawn(at + 2);
+      if (then > 5.5 && now > Math.max(4.5, 0.6 * then)) return { hour: at, points: then };
+    }
+    return null;
+  }
+
   /** Step just before bin i as the parting of two robust lines `gap` h away from it; null when it is within their doubt. */
   private jumpAt(i: number, gap: number, span: number): number | null {
     const { bins } = this;

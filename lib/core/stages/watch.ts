@@ -16,6 +16,8 @@ export const LOOK_H = 3;
 /** Points that may still come, nine times in ten, when a batch is called finished, and when it may be bottled. */
 export const TERMINAL_POINTS = 1.7;
 export const BOTTLE_POINTS = 1.0;
+/** Points that are likely still to come when it may be racked. */
+export const RACK_POINTS = 2.6;
 /** Share of fruit that is sugar where nobody says. Common practice. */
 const FRUIT_SUGAR = 0.1;
 
@@ -337,6 +339,12 @@ export class Watch {
       if (this.sweetened) this.plateau = this.segment.level;
     }
     const quietFrom = Math.max(this.segment.from, this.frozen ? this.lookedAt : 0);
+    const sugar = track.findSugar(this.lookedAt, quietFrom);
+    if (sugar && !this.nearEvent(sugar.hour)) {
+      this.restart(sugar.hour, this.segment.effectiveOg + sugar.points, null, false);
+      this.lines.clear();
+      return;
+    }
     const step = track.findStep(this.lookedAt, quietFrom);
     if (step && !this.nearEvent(step.hour)) {
       if (step.points > 5.5) this.restart(step.hour, this.segment.effectiveOg + step.points, null, false);
@@ -436,6 +444,8 @@ export class Watch {
 
   private judgePeak(hour: number): void {
     if (this.peaked.on) return;
+    // A drift or the first small fall has no peak.
+    const early = this.progress() < 0.12;
     let below = false;
     for (const window of [12, 18, 24, 36]) {
       const line = this.line(window);
@@ -454,11 +464,19 @@ export class Watch {
       this.maxFittedRate = Math.max(this.maxFittedRate * 0.98, now);
       fitted = now < 0.8 * this.maxFittedRate && fit.curve.share(tau) < 0.78;
     }
-    hold(this.peaked, hour, below || fitted, 2, false);
+    hold(this.peaked, hour, (below || fitted) && !early, 2, false);
   }
 
   swapGas(): number {
     return swapGasLPerH(this.setup.kind, this.setup.volumeL, this.setup.vesselL);
+  }
+
+  /** Gas, L/h, if a cold vessel were warm again: its best pace in the measure of what is left. */
+  private gasIfWarmed(): number {
+    const level = this.levelNow();
+    const { mean } = this.fgPrior();
+    const whole = this.segment.effectiveOg - mean;
+    return level === null || whole <= 0 ? 0 : gasLPerH((this.maxRate * (level - mean)) / whole, this.setup.volumeL);
   }
 
   private judgeAirlock(hour: number): void {
@@ -468,12 +486,13 @@ export class Watch {
     for (const window of [12, 18, 24]) {
       const line = this.line(window);
       if (!line) continue;
+      if (line.slope > 1.5) continue;
       upper = Math.min(upper, gasLPerH(-line.slope + 1.64 * line.se, this.setup.volumeL));
       if (window === 12 || lower === Number.NEGATIVE_INFINITY) lower = gasLPerH(-line.slope - 1.64 * line.se, this.setup.volumeL);
     }
     const limit = this.swapGas();
     // A cold vessel with sugar left is quiet only until somebody warms it.
-    const waiting = this.coldNow() && (this.levelNow() ?? 0) > this.zoneTop() + 8;
+    const waiting = this.coldNow() && this.gasIfWarmed() > limit;
     hold(this.airlock, hour, this.peaked.on && upper < limit && !waiting, 3, lower > 1.3 * limit || waiting);
   }
 
@@ -497,7 +516,8 @@ export class Watch {
     let rackable = this.terminal.on;
     if (!rackable && inside && this.quietSinceAddition(60, 120) && line24 && -line24.slope < 1.2 && -line24.slope + line24.se < 2) {
       const left = this.remaining();
-      rackable = left !== null && left < 2.4;
+      const end = this.tail();
+      rackable = (left !== null && left < RACK_POINTS) || (end !== null && end.remaining < RACK_POINTS && end.sd < 1.5);
     }
     hold(this.rack, hour, rackable, 3, line24 !== null && -line24.slope - 1.64 * line24.se > 1.5);
 
@@ -521,7 +541,8 @@ export class Watch {
     const slow = (line: Line | null, rate: number, upper: number): boolean =>
       line !== null && -line.slope < rate && -line.slope + 1.64 * line.se < upper;
     const settled = this.quietSinceAddition(60, 120);
-    const flat = slow(line48, 0.5, 0.75) || slow(line72, 0.35, 0.5);
+    const begun = this.progress() > 0.12 || hour - (this.started.since ?? hour) > 96;
+    const flat = begun && (slow(line48, 0.5, 0.75) || slow(line72, 0.35, 0.5));
     const moving = [8, 12, 24].some((window) => {
       const line = this.line(window);
       return line !== null && -line.slope - (window === 24 ? 1.64 : 2.5) * line.se > 1;

@@ -1,6 +1,6 @@
 /** Sorbate with sulphite, to hold a yeast that has finished. */
 import { figure, how, type Figure } from '../how/how';
-import { memory, practice } from '../how/sources';
+import { practice } from '../how/sources';
 import { roundDown } from '../units/rounding';
 
 /** Sorbic acid in potassium sorbate by mass: 112.13/150.22. */
@@ -34,7 +34,7 @@ export function stabiliseDose(volumeL: number, abvPercent: number): StabiliseDos
     cautions: [
       'Only a bright drink whose gravity stands still can be stabilised. It does not stop a working yeast.',
       'Sorbate without sulphite can turn to a smell of geraniums.',
-      `At most ${SORBIC_LIMIT_MG_L} mg/L of sorbic acid (${memory('EU limit for wine').source}, from memory). Local law comes first.`,
+      `At most ${SORBIC_LIMIT_MG_L} mg/L of sorbic acid, the EU limit for wine (from memory). Local law comes first.`,
     ],
   };
 }
