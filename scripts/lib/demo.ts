@@ -116,9 +116,10 @@ async function writeBatch(cellarId: string, demo: DemoBatch, { scenario, setup, 
     { transaction },
   );
 
-  const entries: Array<{ at: number; kind: string; text: string; gravity?: number | null; personId: string | undefined }> = [
-    { at: pitchedAt.getTime(), kind: 'pitch', text: `Pitched ${demo.yeast ?? 'the yeast'}.`, gravity: setup.originalGravity, personId: brewer },
-    ...events.map((event, index) => ({ ...event, personId: index % 2 === 0 ? brewer : hand })),
+  const entries: Array<{ at: number; kind: string; text: string | null; gravity?: number | null; personId: string | undefined }> = [
+    { at: pitchedAt.getTime(), kind: 'pitch', text: demo.yeast ? `${demo.yeast[0]!.toUpperCase()}${demo.yeast.slice(1)}, rehydrated.` : null, gravity: setup.originalGravity, personId: brewer },
+    // The log shows an entry's kind by itself; the text says what is more.
+    ...events.map((event, index) => ({ ...event, text: event.text.replace(/^Hydrometer[.,]?\s*/, '').replace(/^./, (letter) => letter.toUpperCase()) || null, personId: index % 2 === 0 ? brewer : hand })),
     ...(demo.notes ?? []).map((note) => ({ at: pitchedAt.getTime() + note.atH * HOUR, kind: 'observation', text: note.text, personId: people.get(note.by) ?? keeper })),
   ];
   for (const entry of entries) {
