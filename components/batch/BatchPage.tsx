@@ -133,9 +133,9 @@ function Loaded({ batch }: { batch: BatchBody }) {
       <BatchHead batch={batch} vessel={vessel} facts={facts} actions={actions} />
       {first && <Decision row={first} vessel={vessel} when={whenOf(first, judged, now, timeZone)} done={working ? doneAct(first, batch, open, may('entries.alter')) : null} onRead={onRead} mayTake={may('alerts.acknowledge')} />}
       <PhoneFacts facts={facts} />
-      <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px]">
+      <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px] wide:grid-rows-[auto_1fr]">
         <div className="wide:col-start-1 wide:row-start-1">
-          <Evidence name={batch.name} picture={picture} span={span} whole={whole} onSpan={(next) => setChosen(isWhole(next, whole) ? null : next)} timeZone={timeZone} phone={phone} trouble={trouble ? `${trouble.message} Shown is what was known before.` : null} />
+          <Evidence name={batch.name} picture={picture} span={span} whole={whole} onSpan={(next) => setChosen(isWhole(next, whole) ? null : next)} timeZone={timeZone} phone={phone} arriving={series.loading} trouble={trouble ? `${trouble.message} Shown is what was known before.` : null} />
         </div>
         <div className="wide:col-start-2 wide:row-span-2 wide:row-start-1 wide:border-l">
           {judged ? (
@@ -145,7 +145,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
           )}
         </div>
         <div className="wide:col-start-1 wide:row-start-2">
-          <Log batchId={batch.id} rows={log} now={now} timeZone={timeZone} onWrite={may('entries.create') ? () => open('observation') : null} />
+          <Log batchId={batch.id} rows={entries ? log : null} now={now} timeZone={timeZone} onWrite={may('entries.create') ? () => open('observation') : null} />
         </div>
       </div>
       {!working && (

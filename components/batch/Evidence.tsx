@@ -6,6 +6,7 @@ import { TwinTable } from '@/components/charts/TextTwin';
 import type { Picture, Span } from '@/components/charts/picture';
 import { twinOf } from '@/components/charts/twin';
 import { isWhole, zoomed } from '@/components/charts/zoom';
+import { Haze } from '@/components/ui/Haze';
 import { ChartKey } from './ChartKey';
 import { cursorLine } from './cursor';
 
@@ -17,6 +18,8 @@ interface EvidenceProps {
   onSpan: (span: Span) => void;
   timeZone: string;
   phone: boolean;
+  /** The readings are on their way. */
+  arriving: boolean;
   /** In place of new readings: why they did not come. */
   trouble: string | null;
 }
@@ -24,7 +27,7 @@ interface EvidenceProps {
 const TOOL = 'type-label inline-flex h-11 min-w-11 items-center justify-center rounded border border-ink3 px-2 text-ink hover:bg-desk disabled:border-dashed disabled:text-ink3 strip:h-6 strip:min-w-6';
 
 /** The chart with its key, the line of figures under the cursor, zoom by buttons, and the same numbers as a table. */
-export function Evidence({ name, picture, span, whole, onSpan, timeZone, phone, trouble }: EvidenceProps) {
+export function Evidence({ name, picture, span, whole, onSpan, timeZone, phone, arriving, trouble }: EvidenceProps) {
   const [cursor, setCursor] = useState<number | null>(null);
   const [table, setTable] = useState(false);
   const twin = useMemo(() => twinOf(picture, name, timeZone, 60), [picture, name, timeZone]);
@@ -49,7 +52,10 @@ export function Evidence({ name, picture, span, whole, onSpan, timeZone, phone, 
           {trouble}
         </p>
       )}
-      <FallChart picture={picture} span={span} whole={whole} onSpan={onSpan} onCursor={setCursor} timeZone={timeZone} phone={phone} label={twin.sentence} />
+      <div className="relative">
+        {arriving && <Haze height={phone ? 228 : 336} className="absolute inset-x-0 top-0 z-[1]" label="Loading the readings" />}
+        <FallChart picture={picture} span={span} whole={whole} onSpan={onSpan} onCursor={setCursor} timeZone={timeZone} phone={phone} label={twin.sentence} />
+      </div>
       <div className="flex items-center gap-2 border-b border-t px-(--margin) py-1.5">
         <button type="button" aria-expanded={table} className="type-label min-h-11 text-ink underline decoration-rule2 underline-offset-4 strip:min-h-6" onClick={() => setTable(!table)}>
           {table ? 'Put the table away' : 'The same numbers as a table'}

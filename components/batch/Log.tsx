@@ -3,6 +3,7 @@
 import { useState } from 'react';
 import { Button } from '@/components/ui/Button';
 import { FilterTabs } from '@/components/ui/FilterTabs';
+import { Haze } from '@/components/ui/Haze';
 import { FormError } from '@/components/ui/Notice';
 import { Sentence } from '@/components/ui/Sentence';
 import { ClientError } from '@/lib/client/fetcher';
@@ -62,7 +63,8 @@ function Row({ row, batchId, now, timeZone }: { row: LogRow; batchId: string; no
 
 interface LogProps {
   batchId: string;
-  rows: readonly LogRow[];
+  /** Null: on their way. */
+  rows: readonly LogRow[] | null;
   now: number;
   timeZone: string;
   /** Opens the form; absent for those who may not write. */
@@ -73,20 +75,22 @@ interface LogProps {
 export function Log({ batchId, rows, now, timeZone, onWrite }: LogProps) {
   const [filter, setFilter] = useState<LogFilter>('all');
   const [all, setAll] = useState(false);
-  const shown = filtered(rows, filter);
+  const shown = filtered(rows ?? [], filter);
   const cut = all ? shown : shown.slice(0, FIRST);
   return (
     <section aria-label="Log" className="px-(--margin) pb-6 pt-3">
       <div className="flex flex-wrap items-center gap-x-5 gap-y-2 border-b-[1.5px] border-ink pb-2.5">
         <h2 className="type-sub">Log</h2>
-        <FilterTabs label="Show" value={filter} onChoose={setFilter} tabs={LOG_FILTERS.map((value) => ({ value, name: FILTER_WORDS[value], count: filtered(rows, value).length }))} />
+        <FilterTabs label="Show" value={filter} onChoose={setFilter} tabs={LOG_FILTERS.map((value) => ({ value, name: FILTER_WORDS[value], count: rows ? filtered(rows, value).length : undefined }))} />
         {onWrite && (
           <Button look="first" onClick={onWrite} className="ml-auto max-strip:w-full">
             Write in the log
           </Button>
         )}
       </div>
-      {shown.length === 0 ? (
+      {rows === null ? (
+        <Haze height={90} className="mt-3" label="Loading the log" />
+      ) : shown.length === 0 ? (
         <p className="type-body border-b border-rule py-4 text-ink2">{filter === 'all' ? 'Nothing logged yet. The pitch is a good first line.' : 'Nothing of this kind yet.'}</p>
       ) : (
         <ol>

@@ -25,7 +25,7 @@ interface LaneChartProps {
 
 /** One batch on the shelf's shared calendar: fall, forecast, bed, posts and temperature. */
 export function LaneChart({ picture, span, timeZone, height, name, narrow = false, className = '' }: LaneChartProps) {
-  const data = useMemo(() => columnsOf(picture), [picture]);
+  const data = useMemo(() => columnsOf(picture, true), [picture]);
   const layout = useMemo(() => layOut(picture, 'lane', height), [picture, height]);
   const scene = useRef<Scene | null>(null);
   const onMeasure = useCallback(

@@ -89,8 +89,9 @@ export function calendarOf(span: Span, timeZone: string, width: number, now: num
     const labels = days.map((day) => ({
       from: day.from,
       to: day.to,
-      top: day.date === 1 ? day.month : perDay >= 34 ? day.weekday : day.letter,
-      bottom: String(day.date),
+      // The first of a month says which, in the line that has room for it.
+      top: day.date === 1 && perDay < 56 ? day.month : perDay >= 34 ? day.weekday : day.letter,
+      bottom: day.date === 1 && perDay >= 56 ? `1 ${day.month}` : String(day.date),
       strong: day.weekend || day.date === 1,
       today: day.from <= now && now < day.to,
     }));

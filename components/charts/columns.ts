@@ -16,7 +16,7 @@ export function ascending(table: Table): Table {
 
 const table = (points: readonly GravityPoint[], ...pick: ((point: GravityPoint) => number)[]): Table => [points.map((point) => point.at), ...pick.map((value) => points.map(value))];
 
-/** A line through the readings stands in where nothing could be fitted yet. */
+/** The readings up to now as a line without doubt. */
 function readingsAsCurve(picture: Picture): GravityPoint[] {
   return picture.readings.at.flatMap((at, index) => {
     const gravity = picture.readings.gravity[index];
@@ -24,17 +24,47 @@ function readingsAsCurve(picture: Picture): GravityPoint[] {
   });
 }
 
-/** All that is drawn as lines, bands, dots and bars, joined on one ascending time column. */
-export function columnsOf(picture: Picture): uPlot.AlignedData {
+const median = (values: number[]): number => values.sort((a, b) => a - b)[values.length >> 1]!;
+
+/** Medians of the readings of each hour from a time on: the level of a batch that left its curve, without its bubbles. */
+function levelFrom(picture: Picture, from: number): GravityPoint[] {
+  const hours = new Map<number, number[]>();
+  for (const point of readingsAsCurve(picture)) {
+    if (point.at < from) continue;
+    const hour = Math.floor(point.at / 3600);
+    hours.set(hour, [...(hours.get(hour) ?? []), point.gravity]);
+  }
+  return [...hours].map(([hour, values]) => {
+    const gravity = median(values);
+    return { at: Math.min(hour * 3600 + 1800, picture.now), gravity, lo: gravity, hi: gravity };
+  });
+}
+
+/** Where it has stopped, the curve holds only until then; what follows is the level itself, up to now. */
+function knownCurve(picture: Picture, past: GravityPoint[]): { fitted: GravityPoint[]; solid: GravityPoint[] } {
+  if (!hasStopped(picture) || !picture.bracket) return { fitted: past, solid: past };
+  const fitted = cutAt(past, picture.bracket.from).past;
+  const level = levelFrom(picture, picture.bracket.from);
+  const now = level.length > 0 ? [{ ...level.at(-1)!, at: picture.now }] : [];
+  return { fitted, solid: [...fitted, ...level, ...now] };
+}
+
+/**
+ * All that is drawn as lines, bands, dots and bars, joined on one ascending time
+ * column. A lane, which has no dots, takes a line through its readings where
+ * nothing could be fitted.
+ */
+export function columnsOf(picture: Picture, lane = false): uPlot.AlignedData {
   const stopped = hasStopped(picture);
   const fitted = picture.curve.length > 1;
-  const { past, coming } = cutAt(fitted ? picture.curve : readingsAsCurve(picture), knownUntil(picture));
+  const { past, coming } = cutAt(fitted ? picture.curve : lane ? readingsAsCurve(picture) : [], knownUntil(picture));
   // Where the batch has stopped, the band belongs to what it should have done.
   const ahead = stopped ? [] : coming;
-  const banded = fitted ? [...past, ...ahead.slice(1)] : [];
+  const known = knownCurve(picture, past);
+  const banded = fitted ? [...known.fitted, ...ahead.slice(1)] : [];
   const tables: Table[] = [
     ascending(table(banded, (point) => point.hi, (point) => point.lo)),
-    ascending(table(past, (point) => point.gravity)),
+    ascending(table(known.solid, (point) => point.gravity)),
     ascending(table(ahead, (point) => point.gravity)),
     ascending(table(stopped ? picture.expected : [], (point) => point.hi, (point) => point.lo)),
     ascending(table(picture.expected, (point) => point.gravity)),

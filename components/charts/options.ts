@@ -40,7 +40,8 @@ export function chartOptions(scene: () => Scene, size: { width: number; height: 
     return viewOf(plot, { palette: now.palette, layout: now.layout, picture: now.picture, ratio: ratio(), haze: hazePattern(plot.ctx, now.palette, ratio(), false) });
   };
   const strip = (key: 'gravity' | 'temperature' | 'gas'): uPlot.Scale => ({
-    auto: false,
+    // Asked anew with every change of data or span, though the answer depends on the layout alone.
+    auto: true,
     range: () => {
       const { layout } = scene();
       const own = layout[key];
@@ -88,7 +89,7 @@ export function chartOptions(scene: () => Scene, size: { width: number; height: 
     padding: [0, right, 0, left],
     legend: HIDDEN,
     axes: [HIDDEN, HIDDEN],
-    scales: { x: { time: true, auto: false, range: () => [scene().span.from, scene().span.to] }, gravity: strip('gravity'), temperature: strip('temperature'), gas: strip('gas') },
+    scales: { x: { time: true, range: () => [scene().span.from, scene().span.to] }, gravity: strip('gravity'), temperature: strip('temperature'), gas: strip('gas') },
     series,
     bands: [
       { series: [SERIES.bandHigh, SERIES.bandLow], fill: band },

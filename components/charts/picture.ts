@@ -90,6 +90,7 @@ export function cutAt(curve: readonly GravityPoint[], at: number): { past: Gravi
 /** Gravity where the bright dot stands: the curve's value, else the last reading's. */
 export function gravityNow(picture: Picture): number | null {
   const known = knownUntil(picture);
+  if (hasStopped(picture) && picture.bracket) return picture.bracket.gravity;
   const fitted = valueAt(picture.curve, known)?.gravity;
   if (fitted !== undefined) return fitted;
   return picture.readings.gravity.findLast((value, index) => value !== null && picture.readings.at[index]! <= picture.now) ?? null;

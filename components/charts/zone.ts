@@ -1,3 +1,5 @@
+import { spanWords } from '@/lib/core/calls/words';
+
 /** Time zones and their days, in seconds since 1970; `timeZone` is an IANA name. */
 const formats = new Map<string, Intl.DateTimeFormat>();
 
@@ -80,12 +82,5 @@ export function when(at: number, now: number, timeZone: string): string {
   return wall.day === today.day && wall.month === today.month ? time : `${wall.weekday} ${time}`;
 }
 
-/** `4 h 10 min`, `31 h`, `3 days`, `40 min` */
-export function duration(seconds: number): string {
-  const minutes = Math.max(0, Math.round(seconds / 60));
-  if (minutes < 60) return `${minutes} min`;
-  const hours = minutes / 60;
-  if (hours < 12) return minutes % 60 === 0 ? `${Math.floor(hours)} h` : `${Math.floor(hours)} h ${minutes % 60} min`;
-  if (hours < 72) return `${Math.round(hours)} h`;
-  return `${Math.round(hours / 24)} days`;
-}
+/** `4 h 10 min`, `31 h`, `3 days`, `40 min`: as the calls say it. */
+export const duration = (seconds: number): string => spanWords(Math.max(0, seconds) / 3600);

@@ -40,8 +40,11 @@ describe('the columns of a chart', () => {
     expect(shown(data, SERIES.fit).at(-1)).toBe(NOW - 5 * HOUR);
   });
 
-  it('draw a line through the readings where nothing is fitted, with no band of doubt', () => {
-    const data = columnsOf(picture({ readings: { at: [NOW - 20, NOW - 10], gravity: [1.05, 1.049], temperature: [null, 18] } }));
+  it('draw a line through the readings of a lane where nothing is fitted, with no band of doubt, and leave a page its dots', () => {
+    const unfitted = picture({ readings: { at: [NOW - 20, NOW - 10], gravity: [1.05, 1.049], temperature: [null, 18] } });
+    expect(shown(columnsOf(unfitted), SERIES.fit)).toEqual([]);
+    expect(shown(columnsOf(unfitted), SERIES.readings)).toEqual([NOW - 20, NOW - 10]);
+    const data = columnsOf(unfitted, true);
     expect(shown(data, SERIES.fit)).toEqual([NOW - 20, NOW - 10]);
     expect(shown(data, SERIES.bandHigh)).toEqual([]);
   });
@@ -50,11 +53,25 @@ describe('the columns of a chart', () => {
     const flat = { from: NOW - 31 * HOUR, to: NOW, gravity: 1.041, words: 'flat 31 h', kind: 'flat' as const };
     const data = columnsOf(picture({ curve: straight(), expected: straight(NOW - 40 * HOUR), bracket: flat }));
     expect(shown(data, SERIES.forecast)).toEqual([]);
+    expect(shown(data, SERIES.bandHigh).at(-1)).toBe(NOW - 31 * HOUR);
     expect(shown(data, SERIES.expectedHigh).length).toBeGreaterThan(10);
     const slow = columnsOf(picture({ curve: straight(), expected: straight(NOW - 40 * HOUR) }));
     expect(shown(slow, SERIES.forecast).length).toBeGreaterThan(10);
     expect(shown(slow, SERIES.expectedHigh)).toEqual([]);
     expect(shown(slow, SERIES.expected).length).toBeGreaterThan(10);
+  });
+});
+
+describe('a batch that stopped', () => {
+  it('follows its own level from there to now, past a bubble that lifts one reading', () => {
+    const from = NOW - 4 * HOUR;
+    const at = Array.from({ length: 16 }, (_, index) => from + index * 900);
+    const gravity = at.map((_, index) => (index === 5 ? 1.06 : 1.041));
+    const flat = { from, to: NOW, gravity: 1.041, words: 'flat 4 h', kind: 'flat' as const };
+    const data = columnsOf(picture({ curve: straight(), expected: straight(from), bracket: flat, readings: { at, gravity, temperature: at.map(() => null) } }));
+    const after = data[0].flatMap((time, index) => (time > from && typeof data[SERIES.fit]![index] === 'number' ? [data[SERIES.fit]![index]] : []));
+    expect(new Set(after)).toEqual(new Set([1.041]));
+    expect(shown(data, SERIES.fit).at(-1)).toBe(NOW);
   });
 });
 

@@ -42,6 +42,6 @@ describe('times in words', () => {
   });
 
   it('writes a span as the trade says it', () => {
-    expect([40 * 60, 4 * 3600 + 600, 31 * 3600, 71 * 3600, 72 * 3600].map(duration)).toEqual(['40 min', '4 h 10 min', '31 h', '71 h', '3 days']);
+    expect([-5, 40 * 60, 4 * 3600 + 600, 31 * 3600, 72 * 3600].map(duration)).toEqual(['0 min', '40 min', '4 h 10 min', '31 h', '3 days']);
   });
 });
