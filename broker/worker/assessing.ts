@@ -19,8 +19,10 @@ const LONGEST_SLEEP_MS = 1_000;
 export interface AssessingOptions {
   /** A batch is judged at most this often after new readings, ms. */
   spacingMs: number;
-  /** All working batches are judged at least this often, so that silence is noticed too, ms. */
+  /** How often it is looked whether the ingest is up, and which batches have waited long, ms. */
   tickMs: number;
+  /** Every working batch is judged at least this often, with no new readings too, so that silence is noticed, ms. */
+  idleMs: number;
   /** Told after an alert may have changed. */
   onJudged(): void;
 }
@@ -31,7 +33,7 @@ export interface Assessing {
 }
 
 /** Judges batches as their readings come, and all of them on a tick. */
-export function startAssessing({ spacingMs, tickMs, onJudged }: AssessingOptions): Assessing {
+export function startAssessing({ spacingMs, tickMs, idleMs, onJudged }: AssessingOptions): Assessing {
   const clock = systemClock;
   const schedule = new Schedule(spacingMs);
   const figures = { judged: 0, failed: 0 };
@@ -39,12 +41,14 @@ export function startAssessing({ spacingMs, tickMs, onJudged }: AssessingOptions
   const failures = new Map<string, number>();
   let silenceCounts = false;
   let tickedAt = -Infinity;
+  /** Changes may have gone unheard: every batch is looked at once. */
+  let mayHaveMissed = true;
 
   const tick = async () => {
     const now = clock.now();
     ({ silenceCounts } = await watchIngest({ clock }));
-    // Judged by another worker within this tick: left to that one.
-    for (const batch of await batchesToJudge(new Date(now - tickMs * 0.9))) schedule.ask(batch, now);
+    for (const batch of await batchesToJudge(new Date(mayHaveMissed ? now : now - idleMs))) schedule.ask(batch, now);
+    mayHaveMissed = false;
     schedule.forget(now);
     tickedAt = now;
   };
@@ -95,6 +99,7 @@ export function startAssessing({ spacingMs, tickMs, onJudged }: AssessingOptions
     },
     // What was said while nobody listened is found by looking at everything.
     onConnect: () => {
+      mayHaveMissed = true;
       tickedAt = -Infinity;
       loop.wake();
     },

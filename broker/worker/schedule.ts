@@ -9,6 +9,7 @@ const URGENT_SPACING_MS = 1_000;
 export class Schedule {
   private readonly dueAt = new Map<string, number>();
   private readonly judgedAt = new Map<string, number>();
+  private readonly urgent = new Set<string>();
 
   constructor(private readonly spacingMs: number) {}
 
@@ -19,6 +20,7 @@ export class Schedule {
 
   /** Somebody logged or changed something and looks at the page. */
   askSoon(batch: string, now: number): void {
+    this.urgent.add(batch);
     this.at(batch, this.earliest(batch, now, Math.min(this.spacingMs, URGENT_SPACING_MS)));
   }
 
@@ -27,14 +29,20 @@ export class Schedule {
     this.at(batch, at);
   }
 
-  /** The next batch whose time has come, taken from the list; null: none yet. */
+  /** The next batch whose time has come, taken from the list: one that somebody looks at first, then the longest waiting; null: none yet. */
   take(now: number): string | null {
-    let next: [string, number] | null = null;
-    for (const entry of this.dueAt) if (entry[1] <= now && (next === null || entry[1] < next[1])) next = entry;
-    if (!next) return null;
-    this.dueAt.delete(next[0]);
-    this.judgedAt.set(next[0], now);
-    return next[0];
+    let next: string | null = null;
+    for (const [batch, at] of this.dueAt) if (at <= now && (next === null || this.before(batch, next))) next = batch;
+    if (next === null) return null;
+    this.dueAt.delete(next);
+    this.urgent.delete(next);
+    this.judgedAt.set(next, now);
+    return next;
+  }
+
+  private before(a: string, b: string): boolean {
+    const [urgentA, urgentB] = [this.urgent.has(a), this.urgent.has(b)];
+    return urgentA === urgentB ? this.dueAt.get(a)! < this.dueAt.get(b)! : urgentA;
   }
 
   /** When the next one is due; null: nothing waits. */

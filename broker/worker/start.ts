@@ -13,20 +13,22 @@ const HOUSEKEEPING_MS = 3_600_000;
 export interface WorkerOptions {
   /** A batch is judged at most this often after new readings, ms. */
   spacingMs: number;
-  /** All working batches are judged at least this often, ms. */
+  /** How often the house itself is looked at, ms. */
   tickMs: number;
+  /** Every working batch is judged at least this often, ms. */
+  idleMs: number;
   /** One mail may take this long, ms. */
   sendTimeoutMs: number;
 }
 
-/** Once a minute each, and all of them every minute. */
-export const USUAL: WorkerOptions = { spacingMs: 60_000, tickMs: 60_000, sendTimeoutMs: 30_000 };
+/** With new readings once a minute; without, often enough for a silence that counts in hours. */
+export const USUAL: WorkerOptions = { spacingMs: 60_000, tickMs: 60_000, idleMs: 300_000, sendTimeoutMs: 30_000 };
 
 /** The domain that sends, for message identifiers. */
 const domainOf = (from: string) => /@([^\s>@]+)>?\s*$/.exec(from)?.[1] ?? 'fallbright.example';
 
 /** Starts every part of the worker; returns what stops it, the work in hand first. */
-export function startWorker({ spacingMs, tickMs, sendTimeoutMs }: WorkerOptions = USUAL): { stop(): Promise<void> } {
+export function startWorker({ spacingMs, tickMs, idleMs, sendTimeoutMs }: WorkerOptions = USUAL): { stop(): Promise<void> } {
   const { SMTP_URL, MAIL_FROM, PUBLIC_URL } = env();
   const sending = startSending({
     transport: smtpTransport({ url: SMTP_URL, from: MAIL_FROM, sendTimeoutMs, connectTimeoutMs: Math.min(10_000, sendTimeoutMs) }),
@@ -34,7 +36,7 @@ export function startWorker({ spacingMs, tickMs, sendTimeoutMs }: WorkerOptions 
     messageHost: domainOf(MAIL_FROM),
     leaseMs: sendTimeoutMs * 1.5,
   });
-  const assessing = startAssessing({ spacingMs, tickMs, onJudged: () => sending.wake() });
+  const assessing = startAssessing({ spacingMs, tickMs, idleMs, onJudged: () => sending.wake() });
   const stopHeartbeat = startHeartbeat('worker', () => ({ ...assessing.figures(), ...sending.figures() }));
   const stopPartitions = keepPartitionsAhead();
   const tidy = () => void dropWhatIsOld().catch((error: unknown) => log.warn({ err: error }, 'old rows could not be dropped; tried again in an hour'));

@@ -12,6 +12,7 @@ export class OutboxMail extends Model<InferAttributes<OutboxMail>, InferCreation
   declare nextAttemptAt: CreationOptional<Date>;
   declare leasedUntil: CreationOptional<Date | null>;
   declare attempts: CreationOptional<number>;
+  declare refusals: CreationOptional<number>;
   declare sentAt: CreationOptional<Date | null>;
   declare failedAt: CreationOptional<Date | null>;
   declare lastError: CreationOptional<string | null>;
@@ -30,6 +31,7 @@ export class OutboxMail extends Model<InferAttributes<OutboxMail>, InferCreation
         nextAttemptAt: DataTypes.DATE,
         leasedUntil: DataTypes.DATE,
         attempts: DataTypes.INTEGER,
+        refusals: DataTypes.INTEGER,
         sentAt: DataTypes.DATE,
         failedAt: DataTypes.DATE,
         lastError: DataTypes.TEXT,

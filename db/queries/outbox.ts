@@ -57,6 +57,8 @@ export interface Claimed {
   alertId: string | null;
   payload: unknown;
   attempts: number;
+  /** How often a server said no to it. */
+  refusals: number;
   createdAt: Date;
   personId: string;
   name: string;
@@ -84,7 +86,7 @@ export function claimForOnePerson(now: Date, leaseUntil: Date, most: number): Pr
      update outbox o set leased_until = $leaseUntil, attempts = o.attempts + 1
      from taken, people p
      where o.id = taken.id and p.id = o.person_id
-     returning o.id, o.dedupe_key as "dedupeKey", o.alert_id as "alertId", o.payload, o.attempts, o.created_at as "createdAt", p.id as "personId", p.name, p.email,
+     returning o.id, o.dedupe_key as "dedupeKey", o.alert_id as "alertId", o.payload, o.attempts, o.refusals, o.created_at as "createdAt", p.id as "personId", p.name, p.email,
        (o.cellar_id is null or exists (select 1 from memberships m where m.cellar_id = o.cellar_id and m.person_id = o.person_id and m.role <> 'guest')) as "stillThere"`,
     { bind: { now, leaseUntil, most }, type: QueryTypes.SELECT },
   );
@@ -94,12 +96,12 @@ export async function markSent(ids: readonly number[], at: Date): Promise<void> 
   await database().query(`update outbox set sent_at = $at, leased_until = null, last_error = null where id = any($ids::bigint[])`, { bind: { ids, at } });
 }
 
-export async function markForRetry(ids: readonly number[], nextAt: Date, error: string): Promise<void> {
-  await database().query(`update outbox set next_attempt_at = $nextAt, leased_until = null, last_error = $error where id = any($ids::bigint[])`, { bind: { ids, nextAt, error } });
+export async function markForRetry(id: number, { nextAt, refusals, error }: { nextAt: Date; refusals: number; error: string }): Promise<void> {
+  await database().query(`update outbox set next_attempt_at = $nextAt, refusals = $refusals, leased_until = null, last_error = $error where id = $id`, { bind: { id, nextAt, refusals, error } });
 }
 
-export async function markFailed(ids: readonly number[], at: Date, error: string): Promise<void> {
-  await database().query(`update outbox set failed_at = $at, leased_until = null, last_error = $error where id = any($ids::bigint[])`, { bind: { ids, at, error } });
+export async function markFailed(id: number, at: Date, error: string): Promise<void> {
+  await database().query(`update outbox set failed_at = $at, leased_until = null, last_error = $error where id = $id`, { bind: { id, at, error } });
 }
 
 /** When the next mail is due, ms since 1970; null: none waits. */

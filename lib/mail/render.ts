@@ -12,6 +12,8 @@ export type Block =
   | { type: 'figures'; rows: Array<{ name: string; value: string; limit: string | null }> }
   | { type: 'caution'; text: string }
   | { type: 'link'; label: string; url: string }
+  /** A second way on, less loud. */
+  | { type: 'way'; label: string; url: string; after: string }
   | { type: 'rule' }
   | { type: 'foot'; text: string };
 
@@ -59,6 +61,8 @@ function blockHtml(block: Block): string {
       return `<p class="ink caution" style="margin:0 0 16px;padding:8px 12px;border-left:4px solid ${COLOURS.madder};font:400 15px/21px ${SERIF};color:${COLOURS.ink}"><strong>Take care.</strong> ${withFigures(block.text)}</p>`;
     case 'link':
       return `<p style="margin:18px 0"><a class="button" href="${escapeHtml(block.url)}" style="display:inline-block;padding:11px 16px;border-radius:2px;background:${COLOURS.ink};color:#F4F8F0;font:560 13px/18px ${MONO};text-decoration:none">${escapeHtml(block.label)}</a></p>`;
+    case 'way':
+      return `<p class="ink2" style="margin:0 0 14px;font:400 14px/20px ${SERIF};color:${COLOURS.ink2}"><a class="ink" href="${escapeHtml(block.url)}" style="color:${COLOURS.ink}">${escapeHtml(block.label)}</a> ${escapeHtml(block.after)}</p>`;
     case 'rule':
       return '<hr class="ruled" style="margin:22px 0;border:0;border-top:1px solid #8FA292">';
     case 'foot':
@@ -84,6 +88,8 @@ function blockText(block: Block): string {
       return `\nTake care. ${block.text}`;
     case 'link':
       return `\n${block.label}: ${block.url}`;
+    case 'way':
+      return `${block.label}: ${block.url} (${block.after})`;
     case 'rule':
       return `\n${'-'.repeat(40)}\n`;
   }

@@ -169,6 +169,15 @@ describe('a mail server in a temper', () => {
     expect((await send()).mails).toBe(0);
   });
 
+  it('that was long away and then says no once is asked again', async () => {
+    await db.sequelize.query('update outbox set attempts = 30');
+    server.temper = (count) => (count === 0 ? 'refuses' : 'takes');
+    const { row } = await trySend();
+    expect(row).toMatchObject({ failedAt: null, refusals: 1 });
+    clock.set(row.nextAttemptAt.getTime());
+    expect((await send()).mails).toBe(1);
+  });
+
   it('that is not there leaves the mail waiting, and the next one untried', async () => {
     const other = await buildMember('hand');
     await owe(other.personId, 'two', clock.now());

@@ -1,4 +1,4 @@
-import { batchLink, cellarFoot, evidenceAndAct, stateOf, vesselLine } from '../parts';
+import { batchLink, cellarFoot, evidenceAndAct, stateOf, takeLink, vesselLine } from '../parts';
 import type { AlertPayload, RenderContext, Rendered } from '../payload';
 import { render } from '../render';
 import { bare, vesselName } from '../words';
@@ -12,7 +12,7 @@ export function alertOpened(payload: AlertPayload, context: RenderContext): Rend
     vesselLine(payload),
     ...evidenceAndAct(payload),
     batchLink(payload, context),
-    { type: 'foot', text: 'Say “I have it” there and nobody is told again.' },
+    takeLink(payload, context),
     cellarFoot(payload),
   ]);
 }

@@ -1,4 +1,4 @@
-import { batchLink, cellarFoot, evidenceAndAct, stateOf, vesselLine } from '../parts';
+import { batchLink, cellarFoot, evidenceAndAct, stateOf, takeLink, vesselLine } from '../parts';
 import type { AlertPayload, RenderContext, Rendered } from '../payload';
 import { render } from '../render';
 import { bare, lasting, vesselName } from '../words';
@@ -14,6 +14,7 @@ export function alertRepeated(payload: AlertPayload, context: RenderContext): Re
     { type: 'prose', text: `It has been so for ${lasting(alert.since, at)}, and nobody has it in hand.` },
     ...evidenceAndAct(payload),
     batchLink(payload, context),
+    takeLink(payload, context),
     cellarFoot(payload),
   ]);
 }

@@ -18,13 +18,13 @@ const WAITS: Record<FailureKind, { first: number; factor: number; longest: numbe
 
 /**
  * When to try again after a failure, or null to give up. Pure.
- * @param attempts tries made, this one included
+ * @param tries how many were made, this one included; for `refused`, how many were refused
  * @param spread 0 to 1: waits differ by a quarter up and down, so that many do not come back in one instant
  */
-export function nextTry(kind: FailureKind, attempts: number, createdAt: number, now: number, spread: number): number | null {
-  if (kind === 'refused' && attempts >= REFUSALS_BEFORE_GIVING_UP) return null;
+export function nextTry(kind: FailureKind, tries: number, createdAt: number, now: number, spread: number): number | null {
+  if (kind === 'refused' && tries >= REFUSALS_BEFORE_GIVING_UP) return null;
   if (now - createdAt >= GIVE_UP_AFTER_MS) return null;
   const { first, factor, longest } = WAITS[kind];
-  const wait = Math.min(longest, first * factor ** Math.max(0, attempts - 1));
+  const wait = Math.min(longest, first * factor ** Math.max(0, tries - 1));
   return now + Math.round(wait * (0.75 + 0.5 * spread));
 }

@@ -95,7 +95,7 @@ async function sendable(claimed: readonly Claimed[], clock: Clock): Promise<Read
     const reason = !row.stillThere ? 'no longer told of alerts in this cellar' : parsed.success ? null : 'the mail cannot be made';
     if (parsed.success && reason === null) ready.push({ row, payload: parsed.data });
     else {
-      await markFailed([row.id], new Date(clock.now()), reason ?? '');
+      await markFailed(row.id, new Date(clock.now()), reason ?? '');
       log.warn({ outbox: row.id, reason }, 'a mail is not sent');
     }
   }
@@ -104,9 +104,12 @@ async function sendable(claimed: readonly Claimed[], clock: Clock): Promise<Read
 
 async function giveBack(ready: readonly Ready[], kind: ReturnType<typeof asFailure>['kind'], message: string, now: number, random: () => number): Promise<void> {
   for (const { row } of ready) {
-    const at = nextTry(kind, row.attempts, row.createdAt.getTime(), now, random());
-    if (at === null) await markFailed([row.id], new Date(now), message);
-    else await markForRetry([row.id], new Date(at), message);
+    const refusals = row.refusals + (kind === 'refused' ? 1 : 0);
+    // A server that was long away and then says no once has said no once.
+    const tries = kind === 'refused' ? refusals : row.attempts;
+    const at = nextTry(kind, tries, row.createdAt.getTime(), now, random());
+    if (at === null) await markFailed(row.id, new Date(now), message);
+    else await markForRetry(row.id, { nextAt: new Date(at), refusals, error: message });
     log.warn({ outbox: row.id, attempts: row.attempts, kind, error: message, next: at === null ? null : new Date(at).toISOString() }, at === null ? 'a mail is given up' : 'a mail has to wait');
   }
 }

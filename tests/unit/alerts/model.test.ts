@@ -1,5 +1,6 @@
 import { expect, it } from 'vitest';
 import { INACTIVE, step, type AlertState, type Look, type Timing } from '@/lib/core/alerts/machine';
+import { seeded } from '../../support/random';
 
 const HOUR = 3_600_000;
 
@@ -62,17 +63,6 @@ class Reference {
   }
 }
 
-/** Small seeded generator (mulberry32), so that a failure can be played again. */
-function generator(seed: number): () => number {
-  let a = seed >>> 0;
-  return () => {
-    a = (a + 0x6d2b79f5) | 0;
-    let t = Math.imul(a ^ (a >>> 15), 1 | a);
-    t = (t + Math.imul(t ^ (t >>> 7), 61 | t)) ^ t;
-    return ((t ^ (t >>> 14)) >>> 0) / 4294967296;
-  };
-}
-
 function randomLook(random: () => number, now: number): Look {
   const r = random();
   if (r < 0.42) return { type: 'true', since: random() < 0.5 ? null : now - Math.floor((random() - 0.1) * 8 * HOUR) };
@@ -86,7 +76,7 @@ function randomLook(random: () => number, now: number): Look {
 const said = (events: readonly { type: string }[]) => events.map((event) => (event.type === 'resolved' ? `resolved ${(event as { by?: string }).by}` : event.type));
 
 it.each([1, 2, 3, 4, 5, 6, 7, 8])('does what the plain model does over 10,000 random looks (seed %i)', (seed) => {
-  const random = generator(seed);
+  const random = seeded(seed);
   const span = (most: number) => Math.floor(random() * most) * HOUR;
   const timing: Timing = { forMs: span(4), keepMs: span(4), restMs: span(24), repeatMs: random() < 0.3 ? null : span(6) + HOUR, repeats: Math.floor(random() * 4) };
   const model = new Reference(timing);

@@ -39,7 +39,7 @@ describe('a mail about an alert', () => {
   it('says which vessel, what, since when, the figure behind it, what to do first, and where to read on, as text and as HTML', () => {
     const { subject, text, html } = compose([payload()], context);
     expect(subject).toBe('Check: Oat stout, tag 5: Stopped at 1.041: flat for 31 h');
-    for (const part of ['Oat stout, tag 5, back row', 'Since Tue 3 Mar 00:00, 31 h.', 'limit 1.014', '−0.1 points/d', 'Warm it into its range', 'https://barn.example/batches/b1', 'Low barn', 'local law']) {
+    for (const part of ['Oat stout, tag 5, back row', 'Since Tue 3 Mar 00:00, 31 h.', 'limit 1.014', '−0.1 points/d', 'Warm it into its range', 'https://barn.example/batches/b1', 'https://barn.example/alerts?alert=a1', 'Low barn', 'local law']) {
       expect(text).toContain(part);
       // The link's address is in a tag, the rest between tags.
       expect(html.replace(/<(?!a )[^>]+>/g, '')).toContain(part);

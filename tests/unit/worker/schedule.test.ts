@@ -39,6 +39,13 @@ describe('the schedule of judgements', () => {
     expect([schedule.take(10), schedule.take(10), schedule.take(10)]).toEqual(['a', 'b', null]);
   });
 
+  it('takes first what somebody is looking at', () => {
+    const schedule = new Schedule(MINUTE);
+    for (const batch of ['a', 'b', 'c']) schedule.ask(batch, 0);
+    schedule.askSoon('d', 5);
+    expect([schedule.take(10), schedule.take(10)]).toEqual(['d', 'a']);
+  });
+
   it('says when the next is due', () => {
     const schedule = new Schedule(MINUTE);
     expect(schedule.nextAt()).toBeNull();
