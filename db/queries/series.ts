@@ -92,7 +92,7 @@ function unpack(packed: number, first: 'gravity' | 'temperature', start: number)
  * A batch's readings in `[from, to)`, s since 1970: from each bucket of `widthS`
  * its lowest and highest in gravity and in temperature, in time. Gravities to
  * 0.00001, temperatures to 0.01 °C.
- * @param widthS under 1e7 s
+ * @param widthS whole seconds, under 1e7
  */
 export async function thinnedSeries(batchId: string, from: number, to: number, widthS: number): Promise<{ count: number; points: SeriesPoint[] }> {
   const { rows } = await runPrepared<ThinnedRow>(database(), THINNED, [batchId, from, to, widthS]);

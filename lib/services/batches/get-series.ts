@@ -42,8 +42,8 @@ export async function getSeries(actor: Actor, batchId: string, query: z.infer<ty
   }
 
   const end = last.at + 1;
-  // One place is for the latest reading.
-  const width = Math.max(1, (end - first) / Math.max(1, Math.floor((query.points - 1) / PER_BUCKET)));
+  // One place is for the latest reading. Whole seconds keep the times exact.
+  const width = Math.ceil((end - first) / Math.floor((query.points - 1) / PER_BUCKET));
   const thinned = await thinnedSeries(batchId, first, end, width);
   const points = thinned.count <= query.points ? await allReadings(batchId, first, end) : withLast(thinned.points, last);
   return body(query.from === undefined ? first : from, query.to === undefined ? last.at : to, thinned.count, points);
