@@ -4,7 +4,8 @@ import { useState, type FormEvent } from 'react';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Field, Select } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
-import { PageHead } from '@/components/ui/Page';
+import { GroupBar, PageHead } from '@/components/ui/Page';
+import { Sentence } from '@/components/ui/Sentence';
 import { createSensor } from '@/lib/client/sensors';
 import { ClientError } from '@/lib/client/fetcher';
 import { createSensor as createSensorSchema, type CreatedSensorBody } from '@/lib/contracts/sensors';
@@ -41,6 +42,36 @@ function Shown({ sensor, doors }: { sensor: CreatedSensorBody; doors: Doors }) {
   );
 }
 
+/** The message that is taken, from the contract's own limits. */
+const SENT: readonly { name: string; says: string; needed?: true }[] = [
+  { name: 'gravity', says: 'SG at 20 °C, 0.970 to 1.200', needed: true },
+  { name: 'temperature', says: '°C, −10 to 60', needed: true },
+  { name: 'at', says: 'when it was measured, such as 2026-03-04T06:00:00Z; without it, when it arrives' },
+  { name: 'battery', says: 'V, 0 to 15' },
+  { name: 'signal', says: 'dBm, −130 to 0' },
+  { name: 'sequence', says: 'a whole number that counts up; shows gaps' },
+];
+
+function WhatItSends() {
+  return (
+    <section aria-label="What it sends" className="min-w-0">
+      <GroupBar word="What it sends" note="one JSON object, or up to 500 in a list" />
+      <dl>
+        {SENT.map((field) => (
+          <div key={field.name} className="grid grid-cols-[8rem_minmax(0,1fr)] items-baseline gap-x-4 border-b border-rule px-(--margin) py-1.5">
+            <dt className={`font-mono text-[0.8125rem] ${field.needed ? 'font-semibold' : 'font-medium text-ink2'}`}>{field.name}</dt>
+            <dd className="type-body">
+              <Sentence>{field.says}</Sentence>
+              {field.needed && <span className="text-ink2">, needed</span>}
+            </dd>
+          </div>
+        ))}
+      </dl>
+      <p className="type-body px-(--margin) py-3 text-ink2">A reading sent twice counts once, and late ones are taken. What cannot be a reading is kept with its reason on the sensor’s page.</p>
+    </section>
+  );
+}
+
 /** Gives a sensor its identifier and its secret. */
 export function NewSensor({ doors }: { doors: Doors }) {
   const [errors, setErrors] = useState<Record<string, string[]>>({});
@@ -73,23 +104,26 @@ export function NewSensor({ doors }: { doors: Doors }) {
   return (
     <>
       <PageHead title="Add a sensor" />
-      <form noValidate onSubmit={(event) => void submit(event)} className="flex max-w-[420px] flex-col gap-4 px-(--margin) py-5">
-        {failed && <FormError>{failed}</FormError>}
-        <Field label="name" name="name" autoFocus maxLength={60} autoComplete="off" hint="What is written on it, such as Float 05" error={errors.name?.[0]} />
-        <Select label="speaks every" name="interval_s" defaultValue="900" hint="As it is set in the sensor; silence is measured by it" error={errors.interval_s?.[0]}>
-          {INTERVALS.map((interval) => (
-            <option key={interval.seconds} value={interval.seconds}>
-              {interval.name}
-            </option>
-          ))}
-        </Select>
-        <div className="flex flex-wrap gap-2">
-          <Button type="submit" look="first" disabled={busy}>
-            {busy ? 'Adding it' : 'Add it'}
-          </Button>
-          <LinkButton href="/sensors">Leave it</LinkButton>
-        </div>
-      </form>
+      <div className="wide:grid wide:min-h-[calc(100dvh-110px)] wide:grid-cols-[424px_minmax(0,1fr)]">
+        <form noValidate onSubmit={(event) => void submit(event)} className="flex flex-col gap-4 bg-desk px-(--margin) py-5 wide:border-r-[1.5px] wide:border-ink">
+          {failed && <FormError>{failed}</FormError>}
+          <Field label="name" name="name" autoFocus maxLength={60} autoComplete="off" hint="What is written on it, such as Float 05" error={errors.name?.[0]} />
+          <Select label="speaks every" name="interval_s" defaultValue="900" hint="As it is set in the sensor; silence is measured by it" error={errors.interval_s?.[0]}>
+            {INTERVALS.map((interval) => (
+              <option key={interval.seconds} value={interval.seconds}>
+                {interval.name}
+              </option>
+            ))}
+          </Select>
+          <div className="flex flex-wrap gap-2">
+            <Button type="submit" look="first" disabled={busy}>
+              {busy ? 'Adding it' : 'Add it'}
+            </Button>
+            <LinkButton href="/sensors">Leave it</LinkButton>
+          </div>
+        </form>
+        <WhatItSends />
+      </div>
     </>
   );
 }

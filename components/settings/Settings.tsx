@@ -132,54 +132,58 @@ export function Settings() {
     <>
       <PageHead title="Settings" />
       {loading && <Haze height={96} label="Loading the settings" className="m-4" />}
-      <div className="max-w-[900px]">
-        {me && (
-          <section aria-label="You">
-            <GroupBar word="You" />
-            <Row name="name">{me.person.name}</Row>
-            <Row name="e-mail">
-              <span className="font-mono text-[0.8125rem]">{me.person.email}</span>
-            </Row>
-            <Row name="role">{ROLE_WORDS[me.cellar.role]}</Row>
-          </section>
-        )}
-        <section aria-label="This device">
-          <GroupBar word="This device" />
-          <div className="border-b border-rule px-(--margin) py-3">
-            <Choice label="light" value={choice} onChoose={chooseTheme} options={THEMES} className="max-w-[380px]" />
-            <p className="type-reason pt-1.5 text-ink2">
-              By the clock, night is from <span className="fig">20:00</span> to <span className="fig">07:00</span>. Kept on this device alone.
-            </p>
-          </div>
-        </section>
-        {me && (
-          <section aria-label="Cellar">
-            <GroupBar word="Cellar" />
-            <Row name="name">{me.cellar.name}</Row>
-            <Row name="time zone">
-              <span className="font-mono text-[0.8125rem]">{me.cellar.time_zone}</span>
-            </Row>
-            {me.cellars.length > 1 && (
-              <Row name="your cellars">
-                <div className="flex flex-wrap gap-2">
-                  {me.cellars.map((cellar) => (
-                    <Button key={cellar.id} size="lane" look={cellar.id === me.cellar.id ? 'first' : 'plain'} aria-pressed={cellar.id === me.cellar.id} onClick={() => void chooseCellar(cellar.id)}>
-                      {cellar.name}
-                    </Button>
-                  ))}
-                </div>
+      <div className="wide:grid wide:min-h-[calc(100dvh-110px)] wide:grid-cols-[424px_minmax(0,1fr)]">
+        <div className="bg-desk wide:border-r-[1.5px] wide:border-ink">
+          {me && (
+            <section aria-label="You">
+              <GroupBar word="You" />
+              <Row name="name">{me.person.name}</Row>
+              <Row name="e-mail">
+                <span className="font-mono text-[0.8125rem]">{me.person.email}</span>
               </Row>
-            )}
+              <Row name="role">{ROLE_WORDS[me.cellar.role]}</Row>
+            </section>
+          )}
+          <section aria-label="This device">
+            <GroupBar word="This device" />
+            <div className="border-b border-rule px-(--margin) py-3">
+              <Choice label="light" value={choice} onChoose={chooseTheme} options={THEMES} className="max-w-[380px]" />
+              <p className="type-reason pt-1.5 text-ink2">
+                By the clock, night is from <span className="fig">20:00</span> to <span className="fig">07:00</span>. Kept on this device alone.
+              </p>
+            </div>
           </section>
-        )}
-        <section aria-label="People">
-          <GroupBar word="People" note="who shares this cellar" />
-          <Members />
-        </section>
-        <section aria-label="Signed in">
-          <GroupBar word="Signed in" note="where you are signed in" />
-          <SignIns now={now} timeZone={timeZone} />
-        </section>
+          {me && (
+            <section aria-label="Cellar">
+              <GroupBar word="Cellar" />
+              <Row name="name">{me.cellar.name}</Row>
+              <Row name="time zone">
+                <span className="font-mono text-[0.8125rem]">{me.cellar.time_zone}</span>
+              </Row>
+              {me.cellars.length > 1 && (
+                <Row name="your cellars">
+                  <div className="flex flex-wrap gap-2">
+                    {me.cellars.map((cellar) => (
+                      <Button key={cellar.id} size="lane" look={cellar.id === me.cellar.id ? 'first' : 'plain'} aria-pressed={cellar.id === me.cellar.id} onClick={() => void chooseCellar(cellar.id)}>
+                        {cellar.name}
+                      </Button>
+                    ))}
+                  </div>
+                </Row>
+              )}
+            </section>
+          )}
+        </div>
+        <div className="min-w-0">
+          <section aria-label="People">
+            <GroupBar word="People" note="who shares this cellar" />
+            <Members />
+          </section>
+          <section aria-label="Signed in">
+            <GroupBar word="Signed in" note="where you are signed in" />
+            <SignIns now={now} timeZone={timeZone} />
+          </section>
+        </div>
       </div>
     </>
   );
