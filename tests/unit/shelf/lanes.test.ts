@@ -1,0 +1,132 @@
+import { describe, expect, it } from 'vitest';
+import { jobsOf, nothingDue } from '@/components/shelf/jobs';
+import { alertsOf, dayOf, inOrder, laneFigures, laneView } from '@/components/shelf/lanes';
+import { placeLanes, placesOf } from '@/components/shelf/placement';
+import { anAlert, aLane, at, NOW } from './make';
+
+const viewOf = (...given: Parameters<typeof aLane>) => laneView(aLane(...given), undefined, NOW, 'UTC');
+
+describe('a lane', () => {
+  it('drops the full stop of a verdict that stands alone, and keeps it where the reason runs in', () => {
+    expect(viewOf({ calls: { stalled: { verdict: 'yes', headline: 'No fall for 31 h at 1.041: check.' } } }).headline).toBe('No fall for 31 h at 1.041: check');
+    expect(viewOf({ calls: { rack: { headline: 'Leave it on the lees.' } } }).headline).toBe('Leave it on the lees.');
+  });
+
+  it.each([
+    ['a trouble', { calls: { stalled: { verdict: 'yes', since: at('2026-10-13T07:30Z') } } }, 'since Tue 07:30'],
+    ['something later today', { neck: 'blow_off', calls: { neck: { verdict: 'soon', expected_at: at('2026-10-15T19:30Z') } } }, 'today 19:30'],
+    ['something tomorrow', { neck: 'blow_off', calls: { neck: { verdict: 'soon', expected_at: at('2026-10-16T14:00Z') } } }, 'Fri 14:00'],
+    ['what may be done any day', { calls: { rack: { verdict: 'yes' } } }, 'any day'],
+    ['what is left be for weeks', { calls: { rack: { expected_at: at('2026-11-02T10:00Z') } } }, 'until 2 Nov'],
+    ['what has no time', {}, ''],
+  ] as const)('says when of %s', (_, given, words) => {
+    expect(viewOf(given).when).toBe(words);
+  });
+
+  it('names who has it once an alert is taken, and offers it to nobody else', () => {
+    const alert = { call: 'stalled', state: 'acknowledged', taken_by: 'Bram Holt' } as const;
+    const view = viewOf({ calls: { stalled: { verdict: 'yes' } }, alerts: [alert] });
+    expect(view.when).toBe('Bram has it');
+    expect(view.openAlert).toBeNull();
+  });
+
+  it('speaks before the first judgement', () => {
+    expect(viewOf({ assessment: null, pitched_at: null }).headline).toBe('Not pitched yet.');
+    expect(viewOf({ assessment: null, sensor: null }).reason).toContain('Read by hand');
+    expect(viewOf({ assessment: null }).reason).toContain('first readings');
+  });
+
+  it('takes an alert’s level from the list where it may be read, else by its call', () => {
+    const lane = aLane({ alerts: [{ call: 'neck', state: 'open' }] });
+    expect(alertsOf(lane, undefined)[0]?.level).toBe('check');
+    expect(alertsOf(lane, [anAlert(lane, { call: 'neck', level: 'act' })])[0]?.level).toBe('act');
+  });
+
+  it('counts days as the wall calendar does', () => {
+    expect(dayOf(at('2026-10-14T23:50Z'), NOW, 'UTC')).toBe('day 1');
+    expect(dayOf(at('2026-10-15T00:10Z'), NOW, 'UTC')).toBe('day 0');
+    // Over the change of clocks in late October a day has 25 hours.
+    expect(dayOf(at('2026-10-20T12:00Z'), Date.parse('2026-10-30T09:00Z') / 1000, 'Europe/Vienna')).toBe('day 10');
+    expect(dayOf(null, NOW, 'UTC')).toBe('not pitched');
+  });
+
+  it('gives old figures their time', () => {
+    const lane = aLane({});
+    expect(laneFigures(lane, null, 'UTC')).toEqual({ gravity: '1.041', under: '3.5 % so far' });
+    expect(laneFigures(lane, Date.parse('2026-10-15T14:10Z') / 1000, 'UTC').under).toBe('at 14:10');
+  });
+
+  it('without a judgement shows the newest hand reading, then the original gravity, then a dash', () => {
+    const bare = { assessment: null, entries: [] } as const;
+    expect(laneFigures(aLane({ ...bare, original_gravity: 1.068 }), null, 'UTC')).toEqual({ gravity: '1.068', under: 'at pitch' });
+    expect(laneFigures(aLane({ ...bare, original_gravity: null }), null, 'UTC').gravity).toBe('–');
+    const read = [
+      { kind: 'reading', at: at('2026-10-12T09:00Z'), gravity: 1.05 },
+      { kind: 'reading', at: at('2026-10-14T09:00Z'), gravity: 1.044 },
+    ] as const;
+    expect(laneFigures(aLane({ assessment: null, entries: read }), null, 'UTC')).toEqual({ gravity: '1.044', under: 'by hand' });
+  });
+});
+
+describe('the shelf', () => {
+  const now = viewOf({ name: 'Oat stout', tag: 5, calls: { stalled: { verdict: 'yes', since: at('2026-10-13T07:30Z') } } });
+  const ready = viewOf({ name: 'Crab cider', tag: 2, calls: { rack: { verdict: 'yes' } } });
+  const quiet = viewOf({ name: 'Bramble wine', tag: 4 });
+  const alsoQuiet = viewOf({ name: 'Quince wine', tag: 3 });
+
+  it('puts what wants a person first, and what is alike by its tag', () => {
+    expect(inOrder([quiet, ready, alsoQuiet, now]).map((view) => view.lane.name)).toEqual(['Oat stout', 'Crab cider', 'Quince wine', 'Bramble wine']);
+  });
+
+  it('groups lanes by how much they want a person', () => {
+    expect(placeLanes([quiet, ready, now], null).map(({ group, views }) => [group, views.length])).toEqual([
+      ['now', 1],
+      ['next', 1],
+      ['leave', 1],
+    ]);
+  });
+
+  it('keeps a lane where it is while somebody points at it, and moves it afterwards', () => {
+    const before = placesOf(placeLanes([quiet, ready, now], null));
+    const passed = { ...now, attention: { ...now.attention, state: 'Leave be' as const, group: 'leave' as const } };
+    const groupOf = (held: typeof before | null) => placeLanes([quiet, ready, passed], held).find(({ views }) => views.includes(passed))?.group;
+    expect(groupOf(before)).toBe('now');
+    expect(groupOf(null)).toBe('leave');
+  });
+});
+
+describe('today’s jobs', () => {
+  const lane = aLane({ name: 'Oat stout', tag: 5 });
+
+  it('are late when nobody took them in time: an hour to act, four to look', () => {
+    const opened = (hours: number) => new Date((NOW - hours * 3600) * 1000).toISOString();
+    const late = (level: 'act' | 'check', hours: number) => jobsOf([], [anAlert(lane, { level, opened_at: opened(hours) })], NOW, 'UTC')[0]?.late;
+    expect([late('act', 0.9), late('act', 1.1), late('check', 3.9), late('check', 4.1)]).toEqual([false, true, false, true]);
+  });
+
+  it('put late ones first, then those nobody has', () => {
+    const fresh = anAlert(lane, { call: 'temperature', kind: 'low', opened_at: new Date((NOW - 600) * 1000).toISOString() });
+    const taken = anAlert(lane, { call: 'sensor', kind: 'silent', state: 'acknowledged', acknowledged_by: { id: lane.id, name: 'Ines Varga' }, look_again_at: at('2026-10-15T18:00Z') });
+    const late = anAlert(lane, { opened_at: at('2026-10-15T07:00Z') });
+    const jobs = jobsOf([], [taken, fresh, late], NOW, 'UTC');
+    expect(jobs.map((job) => job.text)).toEqual(['Look at Oat stout', 'Warm Oat stout', 'See to the sensor in Oat stout']);
+    expect(jobs[2]).toMatchObject({ time: '18:00', note: 'in 3 h 28 min', who: 'Ines', late: false });
+  });
+
+  it('come back late when whoever has it meant to have looked by now', () => {
+    const taken = anAlert(lane, { state: 'acknowledged', acknowledged_by: { id: lane.id, name: 'Ines Varga' }, look_again_at: at('2026-10-15T12:00Z') });
+    expect(jobsOf([], [taken], NOW, 'UTC')[0]).toMatchObject({ late: true, note: 'since 12:00', who: 'Ines' });
+  });
+
+  it('leave out what may be done any day', () => {
+    expect(jobsOf([], [anAlert(lane, { call: 'rack', level: 'know' })], NOW, 'UTC')).toEqual([]);
+  });
+
+  it('hold what falls due today, and nothing of tomorrow', () => {
+    const due = (time: string) => viewOf({ name: 'Perry', neck: 'blow_off', calls: { neck: { verdict: 'soon', expected_at: at(time) } } });
+    expect(jobsOf([due('2026-10-15T19:30Z')], [], NOW, 'UTC')).toMatchObject([{ text: 'Swap the tube on Perry', time: '19:30', alertId: null }]);
+    expect(jobsOf([due('2026-10-16T14:00Z')], [], NOW, 'UTC')).toEqual([]);
+    expect(nothingDue([due('2026-10-16T14:00Z')], NOW, 'UTC')).toBe('Nothing due today. Next: Fri 14:00.');
+    expect(nothingDue([], NOW, 'UTC')).toBe('Nothing due today.');
+  });
+});
