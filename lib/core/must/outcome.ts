@@ -73,7 +73,7 @@ function outcomeOf(sheet: MustSheet, swings: Swings<MustState>): MustOutcome {
     strength: strengthByMethodsOf(og, fg, (f) => read((s) => f(s.originalGravity, s.finalGravity))),
     potential: strengthByMethodsOf(og, read((s) => s.driestGravity), (f) => read((s) => f(s.originalGravity, s.driestGravity))),
     sugarLeftGPerL: told(left, 'g/L', 'fermentable extract less what Balling says has fermented', SOURCES.balling),
-    sweetness: { from: sweetnessOf(left.lo), to: sweetnessOf(left.hi) },
+    sweetness: { from: sweetnessOf(left.lo), to: sweetnessOf(left.hi), how: how('sugar left: dry to 4 g/L, medium dry to 12, semi-sweet to 45, sweet above', SOURCES.oivSweetness, [['sugar left', spell(left, 0), 'g/L']]) },
     nitrogen: nitrogenSheet(read((s) => s.fermentableGPerL), sheet.yeast?.nitrogenNeed ?? null, read((s) => total(s, 'yanMg')), dapG / volumeL.value),
     neck: sheet.vesselL === null ? null : neckForecast(sheet.kind, fill, sheet.vesselL, dropOf(og, fg)),
     releases: sheet.lines.flatMap((line, i) => {

@@ -1,5 +1,5 @@
 /** The must sheet's shapes. */
-import type { Figure, RangeFigure } from '../how/how';
+import type { Figure, How, RangeFigure } from '../how/how';
 import type { StrengthByMethod } from '../strength/methods';
 import type { DrinkKind } from '../types';
 import type { Range } from '../units/range';
@@ -55,7 +55,7 @@ export interface MustOutcome {
   potential: StrengthByMethod;
   /** Sugar left when the yeast stops, g/L. */
   sugarLeftGPerL: RangeFigure;
-  sweetness: { from: Sweetness; to: Sweetness };
+  sweetness: { from: Sweetness; to: Sweetness; how: How };
   nitrogen: NitrogenSheet;
   neck: NeckForecast | null;
   releases: readonly Release[];

@@ -88,13 +88,13 @@ describe('strength and sweetness', () => {
     const of = outcomeOf(sheet(strong, { yeast: { ...yeastNamed('cider yeast'), toleranceAbv: exactly(11) } }));
     expect(of.strength.balling.value.value).toBeCloseTo(11, 1);
     expect(of.sugarLeftGPerL.value.value).toBeGreaterThan(45);
-    expect(of.sweetness).toEqual({ from: 'sweet', to: 'sweet' });
+    expect(of.sweetness).toMatchObject({ from: 'sweet', to: 'sweet' });
     expect(of.notes.find((n) => n.kind === 'tolerance')?.sentence).toContain('not safe in closed bottles');
     expect(of.potential.balling.value.value).toBeGreaterThan(of.strength.balling.value.value + 3);
   });
 
   test('a dry must ends dry', () => {
-    expect(outcomeOf(sheet(undefined, { yeast: yeastNamed('white wine yeast') })).sweetness).toEqual({ from: 'dry', to: 'dry' });
+    expect(outcomeOf(sheet(undefined, { yeast: yeastNamed('white wine yeast') })).sweetness).toMatchObject({ from: 'dry', to: 'dry' });
   });
 
   test('malt ends where the yeast’s attenuation says, fruit sugar does not', () => {
