@@ -27,7 +27,8 @@ export async function getShelf(actor: Actor, query: z.infer<typeof shelfQuery>, 
   const rows = await findBatches({ cellarId: actor.cellarId, workingSince: from, limit: MOST_LANES, withCurve: true });
   const ids = rows.map((row) => row.id);
   const span = { from: from.getTime() / 1000, to: to.getTime() / 1000 };
-  const width = Math.max(HOUR_S, (span.to - span.from) / LANE_POINTS);
+  // Readings fill the calendar only up to now.
+  const width = Math.max(HOUR_S, (Math.min(span.to, clock.now() / 1000) - span.from) / LANE_POINTS);
   const [series, entries] = await Promise.all([laneSeries(ids, span.from, span.to, width), laneEntries(ids, from, to)]);
   const seriesOf = new Map(series.map((row) => [row.batchId, row]));
   const entriesOf = new Map<string, LaneEntryRow[]>(ids.map((id) => [id, []]));

@@ -1,0 +1,155 @@
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { Membership } from '@/db/models';
+import { inTransaction } from '@/db/client';
+import { changeSchema, type Change } from '@/lib/contracts/events';
+import { notifyChange } from '@/lib/services/changes';
+import { useDatabase } from '../support/database';
+import { buildBatch, buildMember } from '../support/factories';
+import { until } from '../support/processes';
+import { call, sessionCookie, startWeb, type Web } from '../support/web';
+
+interface Listening {
+  status: number;
+  type: string | null;
+  changes: Change[];
+  beats: number;
+  closed: boolean;
+  end(): void;
+}
+
+describe('live events', () => {
+  const db = useDatabase();
+  let web: Web;
+  beforeAll(async () => {
+    web = await startWeb({ databaseUrl: db.url });
+  }, 700_000);
+  afterAll(async () => {
+    await web?.stop();
+  });
+
+  /** A page's event stream, read as it comes. */
+  async function listening(cookie: string | undefined, headers: Record<string, string> = {}, server: Pick<Web, 'url'> = web): Promise<Listening> {
+    const abort = new AbortController();
+    const response = await fetch(`${server.url}/api/v1/events`, { headers: { accept: 'text/event-stream', ...(cookie && { cookie }), ...headers }, signal: abort.signal });
+    const state: Listening = { status: response.status, type: response.headers.get('content-type'), changes: [], beats: 0, closed: false, end: () => abort.abort() };
+    void (async () => {
+      let rest = '';
+      try {
+        for await (const chunk of response.body!.pipeThrough(new TextDecoderStream())) {
+          const messages = (rest + chunk).split('\n\n');
+          rest = messages.pop()!;
+          for (const message of messages) {
+            if (message.includes('event: beat')) state.beats += 1;
+            const data = /^event: change\ndata: (.*)$/m.exec(message)?.[1];
+            if (data) state.changes.push(changeSchema.parse(JSON.parse(data)));
+          }
+        }
+      } catch {
+        // Cut off, as a page that goes or a server that dies does.
+      }
+      state.closed = true;
+    })();
+    if (response.ok) await until('the first beat', () => state.beats > 0);
+    return state;
+  }
+
+  const say = (change: Change) => inTransaction((transaction) => notifyChange(change, transaction));
+
+  it('tells a change of the cellar within two seconds, to every page that is open', async () => {
+    const member = await buildMember('hand');
+    const { cookie } = await sessionCookie(member.personId);
+    const pages = [await listening(cookie), await listening(cookie)];
+    const batch = await buildBatch({ cellarId: member.cellarId });
+    const began = Date.now();
+    const logged = await call(web, 'POST', `/api/v1/batches/${batch.id}/entries`, { cookie, body: { kind: 'note', at: new Date().toISOString(), text: 'Bubbles.' } });
+    expect(logged.status).toBe(201);
+    for (const page of pages) await until('the change', () => page.changes.length > 0, 2_000);
+    expect(Date.now() - began).toBeLessThan(2_000);
+    for (const page of pages) {
+      expect(page.type).toContain('text/event-stream');
+      expect(page.changes).toEqual([{ cellar: member.cellarId, kind: 'entry', batch: batch.id }]);
+      page.end();
+    }
+  });
+
+  it('says nothing of a change that was rolled back', async () => {
+    const member = await buildMember('hand');
+    const page = await listening((await sessionCookie(member.personId)).cookie);
+    await expect(
+      inTransaction(async (transaction) => {
+        await notifyChange({ cellar: member.cellarId, kind: 'batch', batch: null }, transaction);
+        throw new Error('no');
+      }),
+    ).rejects.toThrow('no');
+    await say({ cellar: member.cellarId, kind: 'sensor', batch: null });
+    await until('the later change', () => page.changes.length > 0);
+    expect(page.changes.map((change) => change.kind)).toEqual(['sensor']);
+    page.end();
+  });
+
+  it('tells nobody of another cellar, and guests nothing of alerts', async () => {
+    const [mine, theirs] = [await buildMember('guest'), await buildMember('keeper')];
+    const page = await listening((await sessionCookie(mine.personId)).cookie);
+    await say({ cellar: theirs.cellarId, kind: 'reading', batch: null });
+    await say({ cellar: mine.cellarId, kind: 'alert', batch: null });
+    await say({ cellar: mine.cellarId, kind: 'reading', batch: null });
+    await until('the own change', () => page.changes.length > 0);
+    expect(page.changes).toEqual([{ cellar: mine.cellarId, kind: 'reading', batch: null }]);
+    page.end();
+  });
+
+  it('lets nobody listen without a session', async () => {
+    expect((await listening(undefined)).status).toBe(401);
+  });
+
+  it('takes a Last-Event-ID and opens as ever', async () => {
+    const member = await buildMember('hand');
+    const page = await listening((await sessionCookie(member.personId)).cookie, { 'last-event-id': '12345; drop' });
+    expect(page.status).toBe(200);
+    page.end();
+  });
+
+  it('ends the stream within a minute of a sign-in that was ended, and of a membership that was taken away', async () => {
+    const [out, removed, kept] = [await buildMember('hand'), await buildMember('hand'), await buildMember('hand')];
+    const session = await sessionCookie(out.personId);
+    const pages = [await listening(session.cookie), await listening((await sessionCookie(removed.personId)).cookie), await listening((await sessionCookie(kept.personId)).cookie)];
+    expect((await call(web, 'DELETE', `/api/v1/sign-ins/${session.signInId}`, { cookie: session.cookie })).status).toBe(204);
+    await Membership.destroy({ where: { personId: removed.personId } });
+    await until('both streams to end', () => pages[0]!.closed && pages[1]!.closed, 60_000);
+    expect(pages[2]!.closed).toBe(false);
+    pages[2]!.end();
+  }, 90_000);
+
+  it('ends streams when the line to the database breaks, so that pages ask again, and hears anew after', async () => {
+    const member = await buildMember('hand');
+    const { cookie } = await sessionCookie(member.personId);
+    const page = await listening(cookie);
+    await db.sequelize.query(`select pg_terminate_backend(pid) from pg_stat_activity where datname = current_database() and application_name = 'fallbright listen'`);
+    await until('the stream to end', () => page.closed, 15_000);
+    const again = await listening(cookie);
+    await say({ cellar: member.cellarId, kind: 'reading', batch: null });
+    await until('the change after the break', () => again.changes.length > 0);
+    again.end();
+  });
+
+  it('forgets pages that went away', async () => {
+    const member = await buildMember('hand');
+    const { cookie } = await sessionCookie(member.personId);
+    const open = async () => Number(/^fallbright_event_streams (\d+)$/m.exec(String((await call(web, 'GET', '/api/metrics')).body))?.[1]);
+    await until('earlier pages to be gone', async () => (await open()) === 0);
+    const pages = await Promise.all(Array.from({ length: 20 }, () => listening(cookie)));
+    expect(await open()).toBe(20);
+    for (const page of pages) page.end();
+    await until('the streams to be forgotten', async () => (await open()) === 0);
+  });
+
+  it('stops within ten seconds while pages listen', async () => {
+    const other = await startWeb({ databaseUrl: db.url });
+    const member = await buildMember('hand');
+    const { cookie } = await sessionCookie(member.personId);
+    const pages = await Promise.all(Array.from({ length: 5 }, () => listening(cookie, {}, other)));
+    const took = await other.stop();
+    expect(took).toBeLessThan(10_000);
+    await until('the streams to end', () => pages.every((page) => page.closed));
+  });
+});
