@@ -1,5 +1,6 @@
 import type { Assessment, BatchEvent, BatchSetup, CallName, Call, CurvePoint, Estimate, Instant, Judgement, Reading, Stage, WideEstimate } from './types';
 import { bottleCall } from './calls/bottle';
+import { callsByHand, handRecord } from './calls/byhand';
 import { neckCall } from './calls/neck';
 import { rackCall } from './calls/rack';
 import type { Scene } from './calls/scene';
@@ -9,8 +10,10 @@ import { startedCall } from './calls/started';
 import { temperatureCall } from './calls/temperature';
 import { call } from './calls/words';
 import { finalGravityHalfWidths, hoursInterval } from './fit/intervals';
+import type { CurveFit } from './fit/map';
 import { gasLPerH } from './gas/gas';
 import { accept } from './series/bins';
+import { hoursToWithin } from './stages/byhand';
 import { LOOK_H, Watch } from './stages/watch';
 import { drawing } from './stages/drawing';
 import { abvBalling, apparentAttenuation } from './strength/strength';
@@ -152,13 +155,16 @@ function peakRate(curve: { rate(tau: number): number; m: number }, tau: number):
   return most;
 }
 
+const MS_PER_H = 3_600_000;
+
 function judgementOf(watch: Watch, at: Instant, hour: number, picture: boolean): Judgement {
   const { track, setup } = watch;
   const last = track.lastReading(hour);
-  const silentH = last ? (at - last.at) / 3_600_000 : null;
+  const silentH = last ? (at - last.at) / MS_PER_H : null;
   const silent = silentH !== null && silentH > Math.max(6, 6 * track.spacing);
-  const level = silent ? null : watch.levelNow();
-  const rate = silent || watch.frozen ? null : watch.rateNow();
+  const hand = handRecord(watch, hour, silent);
+  const level = hand ? hand.last.points : silent ? null : watch.levelNow();
+  const rate = hand ? hand.rate : silent || watch.frozen ? null : watch.rateNow();
   const ratePointsPerDay: Estimate | null = rate && { value: rate.value, lo: rate.value - Z80 * rate.sd, hi: rate.value + Z80 * rate.sd };
   const gas: Estimate | null = ratePointsPerDay && {
     value: gasLPerH(ratePointsPerDay.value, setup.volumeL),
@@ -167,37 +173,6 @@ function judgementOf(watch: Watch, at: Instant, hour: number, picture: boolean):
   };
   const temperature = silent ? null : track.temperature(hour - 3, hour);
   const scene: Scene = { watch, at, hour, timeZone: setup.timeZone ?? 'UTC', level, rate, gas, temperature, silentH, silent };
-
-  const done = watch.progress();
-  const fit = watch.fit();
-  const og = watch.segment.effectiveOg;
-  let finalGravity: WideEstimate | null = null;
-  if (og > 5) {
-    const prior = watch.fgPrior();
-    const centre = fit ? fit.parameters[1]! : prior.mean;
-    const { half80, half95 } = finalGravityHalfWidths(fit ? fit.fgSd : prior.sd, done);
-    const top = level === null ? Number.POSITIVE_INFINITY : level + 1.5;
-    const value = Math.min(centre, top);
-    const hi = Math.min(centre + half80, Math.max(top, value));
-    const hi95 = Math.min(centre + half95, Math.max(top, value));
-    const lo = Math.min(centre - half80, value - 0.5);
-    const lo95 = Math.min(centre - half95, lo);
-    finalGravity = { value: sgOf(value), lo: sgOf(lo), hi: sgOf(hi), lo95: sgOf(lo95), hi95: sgOf(hi95) };
-  }
-
-  let terminalAt: Estimate | null = null;
-  if (watch.terminal.on && watch.terminal.since !== null) {
-    const value = track.instantOf(watch.terminal.since);
-    terminalAt = { value, lo: value, hi: value };
-  } else if (fit && watch.started.on && done >= 0.15 && !watch.stuck.on && !silent) {
-    const hours = watch.hoursToEnd();
-    if (hours !== null && hours < 24 * 365) {
-      const span = hoursInterval(hours, done);
-      terminalAt = { value: at + hours * 3_600_000, lo: at + span.lo * 3_600_000, hi: at + span.hi * 3_600_000 };
-    }
-  }
-
-  const sdLevel = level === null ? null : Math.hypot(0.4, track.calibrationSd(level));
   const calls: Record<CallName, Call> = {
     started: startedCall(scene),
     neck: neckCall(scene),
@@ -206,26 +181,68 @@ function judgementOf(watch: Watch, at: Instant, hour: number, picture: boolean):
     rack: rackCall(scene),
     bottle: bottleCall(scene),
     sensor: sensorCall(scene),
+    ...(hand ? callsByHand(scene, hand) : {}),
   };
+
+  const fit = hand ? hand.fit : watch.fit();
+  const og = watch.segment.effectiveOg;
+  const finalGravity = finalGravityOf(watch, level, fit);
+  const sdLevel = level === null ? null : hand ? hand.last.sd : Math.hypot(0.4, track.calibrationSd(level));
   const assessment: Assessment = {
     at,
-    stage: track.bins.n === 0 ? 'unknown' : stageOf(watch),
+    stage: hand ? stageByHand(calls) : stageOf(watch),
     gravity: level === null || sdLevel === null ? null : { value: sgOf(level), lo: sgOf(level - Z80 * sdLevel), hi: sgOf(level + Z80 * sdLevel) },
     temperatureC: temperature,
-    lastReadingAt: last ? last.at : null,
+    lastReadingAt: last ? last.at : hand ? track.instantOf(hand.last.hour) : null,
     ratePointsPerDay,
     gasLPerH: gas,
     finalGravity,
-    terminalAt,
+    terminalAt: terminalOf(watch, at, hour, level, calls, fit, silent, hand !== null),
     abvPercent: level === null || og <= 0 ? null : abvBalling(sgOf(og), sgOf(level)),
     expectedAbvPercent: finalGravity && og > 0 ? abvBalling(sgOf(og), finalGravity.value) : null,
     attenuationPercent: level === null || og <= 0 ? null : apparentAttenuation(sgOf(og), sgOf(level)),
     calls,
   };
   const drawn: { curve: CurvePoint[]; expected: CurvePoint[]; gas: { at: Instant; value: number }[] } = picture
-    ? drawing(watch, at)
+    ? drawing(watch, at, hand ? hand.fit : null)
     : { curve: [], expected: [], gas: [] };
   return { assessment, ...drawn };
+}
+
+/** Expected final gravity with its intervals; their upper ends never lie more than 1.5 points above the present level. */
+function finalGravityOf(watch: Watch, level: number | null, fit: CurveFit | null): WideEstimate | null {
+  if (watch.segment.effectiveOg <= 5) return null;
+  const prior = watch.fgPrior();
+  const expected = fit === watch.fit() ? watch.expectedFg() : null;
+  const centre = expected ?? (fit ? fit.parameters[1]! : prior.mean);
+  const { half80, half95 } = finalGravityHalfWidths(fit ? fit.fgSd : prior.sd, watch.progress(level));
+  const top = level === null ? Number.POSITIVE_INFINITY : level + 1.5;
+  const value = Math.min(centre, top);
+  const hi = Math.min(centre + half80, Math.max(top, value));
+  const hi95 = Math.min(centre + half95, Math.max(top, value));
+  const lo = Math.min(centre - half80, value - 0.5);
+  const lo95 = Math.min(centre - half95, lo);
+  return { value: sgOf(value), lo: sgOf(lo), hi: sgOf(hi), lo95: sgOf(lo95), hi95: sgOf(Math.max(hi, hi95)) };
+}
+
+/** When it was, or will be, within a point of its end. No date before 15 % is done, of a stalled batch, or of a silent float. */
+function terminalOf(watch: Watch, at: Instant, hour: number, level: number | null, calls: Record<CallName, Call>, fit: CurveFit | null, silent: boolean, byHand: boolean): Estimate | null {
+  if (watch.terminal.on && watch.terminal.since !== null) {
+    const value = watch.track.instantOf(watch.terminal.since);
+    return { value, lo: value, hi: value };
+  }
+  const done = watch.progress(level);
+  if (!fit || calls.started.verdict !== 'yes' || done < 0.15 || watch.stuck.on || (silent && !byHand)) return null;
+  const hours = byHand ? hoursToWithin(watch, fit, hour, 1) : watch.hoursToEnd();
+  if (hours === null || hours > 24 * 365) return null;
+  const span = hoursInterval(hours, done);
+  return { value: at + hours * MS_PER_H, lo: at + span.lo * MS_PER_H, hi: at + span.hi * MS_PER_H };
+}
+
+function stageByHand(calls: Record<CallName, Call>): Stage {
+  if (calls.started.verdict !== 'yes') return calls.started.verdict === 'unknown' ? 'unknown' : 'lag';
+  if (calls.bottle.verdict === 'yes') return 'terminal';
+  return calls.neck.verdict === 'yes' || calls.rack.verdict === 'yes' || calls.rack.verdict === 'unknown' ? 'slowing' : 'unknown';
 }
 
 /** Before the pitch, or where nobody told when it was, there is nothing to judge but the temperature. */

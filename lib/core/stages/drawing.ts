@@ -1,24 +1,25 @@
 import type { CurvePoint, Instant } from '../types';
 import { finalGravityHalfWidths } from '../fit/intervals';
-import { curveSd } from '../fit/map';
+import { curveSd, type CurveFit } from '../fit/map';
 import { gasLPerH } from '../gas/gas';
 import { sgOf } from '../units/convert';
+import { hoursToWithin } from './byhand';
 import type { Watch } from './watch';
 
 const POINTS = 240;
 const Z80 = 1.2816;
 
 /** The fitted curve with its forecast, what should have happened after a stall, and the gas: at most 240 points each. */
-export function drawing(watch: Watch, at: Instant): { curve: CurvePoint[]; expected: CurvePoint[]; gas: { at: Instant; value: number }[] } {
-  return { ...curves(watch, at), gas: gasSeries(watch) };
+export function drawing(watch: Watch, at: Instant, byHand: CurveFit | null): { curve: CurvePoint[]; expected: CurvePoint[]; gas: { at: Instant; value: number }[] } {
+  return { ...curves(watch, at, byHand), gas: gasSeries(watch) };
 }
 
-function curves(watch: Watch, at: Instant): { curve: CurvePoint[]; expected: CurvePoint[] } {
-  const fit = watch.fit();
-  if (!fit || !watch.started.on) return { curve: [], expected: [] };
+function curves(watch: Watch, at: Instant, byHand: CurveFit | null): { curve: CurvePoint[]; expected: CurvePoint[] } {
+  const fit = byHand ?? watch.fit();
+  if (!fit || !(watch.started.on || byHand)) return { curve: [], expected: [] };
   const { track, segment } = watch;
   const now = track.hourOf(at);
-  const toEnd = watch.stuck.on ? 0 : (watch.hoursToEnd() ?? 0);
+  const toEnd = watch.stuck.on ? 0 : byHand ? hoursToWithin(watch, byHand, now, 1) : (watch.hoursToEnd() ?? 0);
   const ahead = Math.max(24, Math.min(60 * 24, 1.15 * toEnd));
   const tau0 = track.tauAt(segment.from);
   const tauNow = track.tauAt(now) - tau0;

@@ -45,6 +45,7 @@ export class Watch {
   stabilised = false;
   lastAddition: number | null = null;
   lastAdditionFruit = false;
+  readonly handReadings: { hour: number; points: number }[] = [];
   lastHand: { hour: number; points: number; miss: number } | null = null;
 
   readonly started = latch();
@@ -261,6 +262,12 @@ export class Watch {
   }
 
   private pinTo(hour: number, points: number): void {
+    this.handReadings.push({ hour, points });
+    if (this.og === null && hour < 24) {
+      this.og = points;
+      this.ogSd = 1;
+      this.segment = { ...this.segment, effectiveOg: points, level: points, ogSd: 1 };
+    }
     const raw = this.track.level(hour - 4, hour + 2) ?? this.track.level(hour - 12, hour + 1);
     if (raw === null) {
       this.lastHand = { hour, points, miss: 0 };
@@ -600,8 +607,7 @@ export class Watch {
   }
 
   /** Share of the whole expected fall that is done, 0 to 1. */
-  progress(): number {
-    const level = this.levelNow();
+  progress(level = this.levelNow()): number {
     const fg = this.expectedFg() ?? this.fgPrior().mean;
     const { effectiveOg } = this.segment;
     if (level === null || effectiveOg - fg < 1) return 0;
