@@ -1,0 +1,71 @@
+import { describe, expect, it } from 'vitest';
+import { alertFate, alertMeta, alertState, lookAgainTimes, toldLines } from '@/components/alerts/rows';
+import type { AlertBody } from '@/lib/contracts/alerts';
+import { call, hours, NOW } from './fixtures';
+
+const ID = '00000000-0000-4000-8000-000000000001';
+const alert = (over: Partial<AlertBody> = {}): AlertBody => ({
+  id: ID,
+  batch: { id: ID, name: 'Oat stout', tag: 5, vessel_kind: 'carboy', drink_colour: 'stout', neck: 'airlock', volume_l: 10, vessel_l: 12 },
+  call: 'stalled',
+  kind: 'stuck',
+  level: 'check',
+  state: 'open',
+  since: hours(-31),
+  opened_at: hours(-5),
+  acknowledged_at: null,
+  acknowledged_by: null,
+  note: null,
+  look_again_at: null,
+  resolved_at: null,
+  resolved_by: null,
+  evidence: call(),
+  told: [],
+  ...over,
+});
+
+describe('an alert in the list', () => {
+  it('has a shape and a word of its own for each way it can stand', () => {
+    expect(alertState(alert())).toEqual({ state: 'Check', word: 'Check' });
+    expect(alertState(alert({ level: 'act' })).state).toBe('Now');
+    expect(alertState(alert({ call: 'sensor', kind: 'silent' })).state).toBe('Silent');
+    expect(alertState(alert({ call: 'neck', kind: null, level: 'know' })).state).toBe('Due');
+    expect(alertState(alert({ call: 'rack', kind: null, level: 'know' })).state).toBe('Ready');
+    expect(alertState(alert({ state: 'acknowledged', level: 'act' })).state).toBe('In hand');
+    expect(alertState(alert({ state: 'resolved' }))).toEqual({ state: 'Done', word: 'Cleared' });
+  });
+
+  it('says what somebody said they do in place of since when', () => {
+    expect(alertMeta(alert(), NOW, 'UTC')).toBe('Oat stout, tag 5, since Wed 07:32');
+    expect(alertMeta(alert({ note: 'Moved off the sill.' }), NOW, 'UTC')).toBe('Oat stout, tag 5, “Moved off the sill.”');
+  });
+
+  it('says who was told, who has it, and that the time to look again has passed', () => {
+    const told = [
+      { person: 'Bram', means: 'mail' as const, at: null, state: 'waiting' as const, error: null },
+      { person: 'Oriel', means: 'mail' as const, at: hours(-2.5), state: 'sent' as const, error: null },
+    ];
+    expect(toldLines({ told }, NOW, 'UTC').map((line) => line.text)).toEqual(['told Oriel 12:02', 'telling Bram']);
+    const taken = alert({ state: 'acknowledged', acknowledged_by: { id: ID, name: 'Ines' }, look_again_at: hours(-1) });
+    expect(alertFate(taken, NOW, 'UTC').map((line) => line.text)).toEqual(['Ines has it', 'was to look again 13:32']);
+    expect(alertFate(alert({ state: 'resolved', resolved_at: hours(-1) }), NOW, 'UTC')[0]!.text).toBe('passed by itself, 13:32');
+  });
+});
+
+describe('when to look again', () => {
+  it('offers times ahead, in order, the first in about two hours', () => {
+    for (let hour = 0; hour < 24; hour++) {
+      const now = NOW + hour * 3600;
+      const times = lookAgainTimes(now, 'Europe/Prague');
+      expect(times.length).toBeGreaterThanOrEqual(2);
+      times.forEach((time, index) => {
+        expect(time.at).toBeGreaterThan(now + 3600);
+        if (index > 0) expect(time.at).toBeGreaterThan(times[index - 1]!.at);
+      });
+    }
+  });
+
+  it('names tomorrow as such', () => {
+    expect(lookAgainTimes(NOW, 'UTC').map((time) => time.words)).toEqual(['17:00', '18:00', '21:00', 'tomorrow 09:00']);
+  });
+});
