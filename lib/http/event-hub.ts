@@ -30,7 +30,6 @@ class EventHub {
   private beats: NodeJS.Timeout | undefined;
   private checks: NodeJS.Timeout | undefined;
   private stopping = false;
-  private wasConnected = false;
 
   /** A stream of one cellar's changes, open until the client goes, may no longer listen, or the server stops. */
   open(actor: Actor, signInId: string, gone: AbortSignal): ReadableStream<Uint8Array> {
@@ -44,7 +43,6 @@ class EventHub {
           this.streams.add(stream);
           const opened = stream;
           gone.addEventListener('abort', () => this.drop(opened), { once: true });
-          this.begin();
         },
         cancel: () => stream && this.drop(stream),
       },
@@ -63,7 +61,8 @@ class EventHub {
     await this.line?.close();
   }
 
-  private begin(): void {
+  /** Begins to hear, before the first page asks: what is said while nobody listens is lost. */
+  begin(): void {
     this.line ??= hearChanges({
       onChange: (change) => this.tell(change),
       onError: (error) => log.warn({ err: error }, 'trouble on the line to the database'),
@@ -75,8 +74,7 @@ class EventHub {
 
   /** What was said while the line was down went unheard: streams end, and the pages that come back ask for everything. */
   private connected(): void {
-    if (this.wasConnected) for (const stream of [...this.streams]) this.drop(stream);
-    this.wasConnected = true;
+    for (const stream of [...this.streams]) this.drop(stream);
   }
 
   private tell(change: Change): void {

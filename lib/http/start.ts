@@ -9,6 +9,7 @@ import { eventHub } from './event-hub';
  */
 export function startServer(): void {
   shareWithNextAuth();
+  eventHub().begin();
   // An open event stream would keep the server alive after it was told to stop.
   for (const signal of ['SIGTERM', 'SIGINT'] as const) process.once(signal, () => void eventHub().stop());
   logFor('web').info({ url: env().PUBLIC_URL }, 'web ready');
