@@ -134,7 +134,7 @@ describe('the web API', () => {
     });
 
     it('lets neck, volume and pitch of the batch follow the log, a late entry only the past, and a taken back one be undone', async () => {
-      const { ask, cellarId } = await keeper();
+      const { ask } = await keeper();
       const made = batchSchema.parse((await ask('POST', '/batches', { ...CIDER, pitched_at: '2026-03-01T00:00:00Z', neck: 'blow_off' })).body);
       const log = (body: Record<string, unknown>) => ask('POST', `/batches/${made.id}/entries`, body);
       const now = async () => {
