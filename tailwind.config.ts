@@ -13,7 +13,8 @@ export default {
     },
     fontFamily: { mono: 'var(--mono)', serif: 'var(--serif)' },
     borderRadius: { none: '0', DEFAULT: '2px' },
-    screens: { strip: '720px', wide: '1100px' },
+    // 720 and 1100 px; in em, so that large text gets the layout that has room for it.
+    screens: { strip: '45em', wide: '68.75em' },
     // No shadows, no gradients, no rounded boxes: what the theme does not name cannot be used.
     boxShadow: {},
   },

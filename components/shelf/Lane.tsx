@@ -77,9 +77,9 @@ export function Lane({ view, span, now, timeZone, staleAt, mayTake, layout }: La
         </div>
         <div className={`flex min-w-0 flex-col ${middle ? 'gap-2' : 'justify-between'} ${low ? 'pb-1 pt-[3px]' : group === 'now' ? 'pb-[19px] pt-[6px]' : 'pb-[14px] pt-[6px]'}`}>
           <Name view={view} className={low ? 'type-name-low' : 'type-name'} />
-          <div className="flex items-end justify-between gap-2">
+          <div className="flex flex-wrap items-end justify-between gap-x-2">
             <Meta view={view} now={now} timeZone={timeZone} low={low} />
-            <span className="flex flex-col items-end">
+            <span className="ml-auto flex flex-col items-end">
               <span className={low ? 'font-mono text-[0.9375rem] leading-[1.125rem] font-semibold' : 'type-fig-lg'}>{figures.gravity}</span>
               {!low && <span className="type-label whitespace-nowrap text-ink2">{figures.under || ' '}</span>}
             </span>
@@ -125,8 +125,8 @@ export function PhoneLane({ view, span, now, timeZone, staleAt, mayTake }: LaneP
             <p className={`mt-1 text-balance ${group === 'now' ? 'text-[1.125rem]/[1.4375rem] font-[670]' : low ? 'text-[0.9375rem]/[1.25rem] font-[640]' : 'text-[1.0625rem]/[1.375rem] font-[660]'}`}>
               <Sentence strong>{headline.replace(/\.$/, '')}</Sentence>
             </p>
-            <div className="flex items-end justify-between gap-3">
-              <p className="pb-1 text-[0.84375rem]/[1.125rem] text-ink2">
+            <div className="flex flex-wrap items-end justify-end gap-x-3">
+              <p className="min-w-[9rem] flex-1 pb-1 text-[0.84375rem]/[1.125rem] text-ink2">
                 <Sentence>{reason}</Sentence>
               </p>
               <LaneButton view={view} mayTake={mayTake} />

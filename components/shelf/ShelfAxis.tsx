@@ -11,7 +11,7 @@ export function ShelfAxis({ span, now, timeZone }: { span: Span; now: number; ti
   const calendar = calendarOf(span, timeZone, useWidth(cell, 728), now, true);
   const share = (at: number) => ((at - span.from) / (span.to - span.from)) * 100;
   return (
-    <div ref={cell} aria-hidden className="relative h-full overflow-x-clip font-mono text-[0.75rem] leading-[0.8125rem]">
+    <div ref={cell} aria-hidden className="relative h-full overflow-x-clip font-mono text-[min(0.75rem,13px)] leading-[13px]">
       {calendar.weekends.map((weekend) => (
         <span key={weekend.from} className="absolute top-0 -bottom-[1.5px] bg-well" style={{ left: `${share(weekend.from)}%`, width: `${share(weekend.to) - share(weekend.from)}%` }} />
       ))}
@@ -30,7 +30,7 @@ export function ShelfAxis({ span, now, timeZone }: { span: Span; now: number; ti
             <span className={today ? '' : label.top.length > 1 && label.strong && !/^[A-Z]$/.test(label.top) ? 'font-bold text-ink' : 'text-ink3'} style={{ fontWeight: today || label.top.length > 1 ? 600 : 500 }}>
               {label.top || ' '}
             </span>
-            <span className={today || label.strong ? 'text-[0.8125rem]' : ''} style={{ fontWeight: today || (label.strong && !today) ? 700 : 500, color: today ? undefined : label.strong ? 'var(--ink)' : undefined }}>
+            <span className={today || label.strong ? 'text-[min(0.8125rem,14px)]' : ''} style={{ fontWeight: today || (label.strong && !today) ? 700 : 500, color: today ? undefined : label.strong ? 'var(--ink)' : undefined }}>
               {label.bottom}
             </span>
           </span>

@@ -42,7 +42,7 @@ function JobTime({ job }: { job: Job }) {
 
 function JobName({ job }: { job: Job }) {
   return (
-    <Link href={`/batches/${job.batchId}`} className="block truncate py-px text-[0.96875rem]/[1.3125rem] font-[480] text-ink no-underline hover:underline" title={job.text}>
+    <Link href={`/batches/${job.batchId}`} className="two-lines py-px wide:block wide:truncate text-[0.96875rem]/[1.3125rem] font-[480] text-ink no-underline hover:underline" title={job.text}>
       {job.text}
     </Link>
   );
@@ -130,17 +130,19 @@ export function PhoneToday({ jobs, ticks, nothing, mayTake, loading }: TodayProp
   return (
     <section aria-label="Today" className="border-b bg-desk px-(--margin)">
       {shown.map((job) => (
-        <div key={job.key} className="flex items-center border-b py-1">
-          <JobBox job={job} ticks={ticks} mayTake={mayTake} />
-          <div className="-ml-3 mr-3 min-w-0 flex-1">
-            <p className="type-label text-ink2">
-              <span className={job.late ? 'text-madder' : 'text-ink'} style={{ fontWeight: 700 }}>
-                {job.time}
-              </span>{' '}
-              {job.note}
-              {job.tag !== null && `, tag ${job.tag}`}
-            </p>
-            <JobName job={job} />
+        <div key={job.key} className="flex flex-wrap items-center justify-end gap-x-3 border-b py-1">
+          <div className="flex min-w-0 flex-1 basis-[11rem] items-center">
+            <JobBox job={job} ticks={ticks} mayTake={mayTake} />
+            <div className="-ml-3 min-w-0 flex-1">
+              <p className="type-label text-ink2">
+                <span className={job.late ? 'text-madder' : 'text-ink'} style={{ fontWeight: 700 }}>
+                  {job.time}
+                </span>{' '}
+                {job.note}
+                {job.tag !== null && `, tag ${job.tag}`}
+              </p>
+              <JobName job={job} />
+            </div>
           </div>
           {job.who !== null ? (
             <span className="type-label text-ink2">{job.who}</span>
@@ -162,7 +164,7 @@ export function PhoneToday({ jobs, ticks, nothing, mayTake, loading }: TodayProp
       {jobs.length === 0 ? (
         <p className="flex min-h-11 items-center py-2 text-[0.9375rem]">{!loading && <span><Sentence>{nothing}</Sentence></span>}</p>
       ) : (
-        <div className="flex min-h-11 items-center justify-between">
+        <div className="flex min-h-11 flex-wrap items-center justify-between gap-x-4">
           <span className="type-label text-ink2">{more > 0 ? `${more} more today` : countWords(jobs)}</span>
           <Link href="/alerts" className="type-label flex min-h-11 items-center text-ink2 no-underline">
             all alerts ›

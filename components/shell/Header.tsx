@@ -60,7 +60,7 @@ export function Header({ glance, places }: { glance: CellarGlance; places: reado
   const { cellar, vessels, heardAt, timeZone } = glance;
   const place = cellar && `${cellar}${vessels === null ? '' : ` · ${vessels} ${vessels === 1 ? 'vessel' : 'vessels'}`}`;
   return (
-    <header className={`flex min-h-(--header) items-center gap-x-3 border-b-[1.5px] border-ink px-(--margin) ${ownHead ? 'max-strip:hidden' : ''}`}>
+    <header className={`flex min-h-(--header) flex-wrap items-center gap-x-3 border-b-[1.5px] border-ink px-(--margin) ${ownHead ? 'max-strip:hidden' : ''}`}>
       <Link href="/shelf" className="no-underline" aria-label="Fallbright, to the shelf">
         <Wordmark />
       </Link>

@@ -17,13 +17,13 @@ export function PhoneTabs({ places }: { places: readonly Place[] }) {
             key={place.href}
             href={place.href}
             aria-current={here ? 'page' : undefined}
-            className={`type-label relative flex min-h-14 flex-1 flex-col items-center justify-center gap-0.5 pt-1 no-underline ${here ? 'text-ink before:absolute before:inset-x-[14%] before:top-0 before:h-1 before:bg-ink' : 'text-ink2'}`}
+            className={`type-label relative flex min-h-14 min-w-0 flex-1 flex-col text-[min(0.75rem,15px)]! items-center justify-center gap-0.5 pt-1 no-underline ${here ? 'text-ink before:absolute before:inset-x-[14%] before:top-0 before:h-1 before:bg-ink' : 'text-ink2'}`}
             style={{ fontWeight: here ? 700 : 500 }}
           >
             <span className="relative">
               <Icon />
               {place.count ? (
-                <span className="absolute -top-1.5 left-[17px] min-w-[15px] bg-madder px-1 text-center text-[0.6875rem] font-semibold leading-[15px] text-on">
+                <span className="absolute -top-1.5 left-[17px] min-w-[15px] bg-madder px-1 text-center text-[11px] font-semibold leading-[15px] text-on">
                   <span className="heard-only">, </span>
                   {place.count}
                   <span className="heard-only"> open</span>

@@ -14,7 +14,7 @@ export function Wordmark({ size = 24 }: { size?: number }) {
   return (
     <span className="inline-flex items-center" style={{ gap: size * 0.4 }}>
       <Mark size={size} />
-      <span className="font-serif leading-none" style={{ fontSize: `${(size * 0.8) / 16}rem`, fontWeight: 760, letterSpacing: '-0.005em' }}>
+      <span className="font-serif leading-none" style={{ fontSize: `min(${(size * 0.8) / 16}rem, ${size}px)`, fontWeight: 760, letterSpacing: '-0.005em' }}>
         Fallbright
       </span>
     </span>

@@ -5,7 +5,7 @@ import { useSyncExternalStore } from 'react';
 /** `strip` below 720 px, `middle` to 1099, `wide` from 1100: as the look names them. */
 export type PageLayout = 'strip' | 'middle' | 'wide';
 
-const queries = { strip: '(max-width: 719.98px)', wide: '(min-width: 1100px)' };
+const queries = { strip: '(width < 45em)', wide: '(width >= 68.75em)' };
 
 function subscribe(listener: () => void): () => void {
   const lists = Object.values(queries).map((query) => window.matchMedia(query));
