@@ -2,12 +2,14 @@ import { QueryTypes, type Sequelize } from 'sequelize';
 import { SequelizeStorage, Umzug } from 'umzug';
 import * as first from './migrations/0001-first-tables';
 import * as outboxRefusals from './migrations/0002-outbox-refusals';
+import * as wholeJob from './migrations/0003-the-whole-job';
 import type { Migration, Run } from './migrations/types';
 
 /** In order. A migration that has landed is never edited; the next one mends it. */
 const MIGRATIONS: ReadonlyArray<{ name: string; migration: Migration }> = [
   { name: '0001-first-tables', migration: first },
   { name: '0002-outbox-refusals', migration: outboxRefusals },
+  { name: '0003-the-whole-job', migration: wholeJob },
 ];
 
 /** Held while migrating, so that several processes that start together do it once. */

@@ -41,7 +41,7 @@ function TakeBack({ batchId, entryId }: { batchId: string; entryId: string }) {
 
 function Row({ row, batchId, now, timeZone }: { row: LogRow; batchId: string; now: number; timeZone: string }) {
   return (
-    <li className="arrives grid grid-cols-[1fr_auto] items-baseline gap-x-3 gap-y-1 border-b border-rule py-[7px] strip:grid-cols-[98px_22px_1fr_auto_96px] strip:gap-x-2">
+    <li className="arrives grid grid-cols-[1fr_auto] items-baseline gap-x-3 gap-y-1 border-b border-rule py-[7px] strip:grid-cols-[98px_22px_minmax(0,1fr)_auto_52px_92px] strip:gap-x-2">
       <span className="type-label text-[0.71875rem] text-ink2 max-strip:col-start-1">{logTime(row.at, now, timeZone)}</span>
       <span className="max-strip:col-start-2 max-strip:row-start-1 strip:translate-y-[3px]">
         <LogIcon kind={row.kind} />
@@ -52,10 +52,10 @@ function Row({ row, batchId, now, timeZone }: { row: LogRow; batchId: string; no
         {row.text !== '' && row.own !== null && ' '}
         {row.own !== null && <span className="whitespace-pre-line">{<Sentence>{row.own}</Sentence>}</span>}
       </p>
-      <span className="font-mono text-[0.875rem] font-semibold max-strip:col-start-2 max-strip:row-start-3 max-strip:text-right">{row.figure}</span>
-      <span className="type-label flex flex-col items-end text-right text-[0.71875rem] text-ink2 max-strip:col-start-1 max-strip:row-start-3 max-strip:items-start max-strip:text-left">
+      <span className="max-strip:col-start-2 max-strip:row-start-3 max-strip:text-right">{row.mine && <TakeBack batchId={batchId} entryId={row.id} />}</span>
+      <span className="font-mono text-[0.84375rem] font-semibold max-strip:col-start-1 max-strip:row-start-4 max-strip:empty:hidden strip:text-right">{row.figure}</span>
+      <span className="type-label truncate text-[0.71875rem] text-ink2 max-strip:col-start-1 max-strip:row-start-3 strip:text-right" title={row.who}>
         {row.who}
-        {row.mine && <TakeBack batchId={batchId} entryId={row.id} />}
       </span>
     </li>
   );

@@ -69,6 +69,12 @@ function linesOf(call: CallBody, now: number, timeZone: string, ruler: RulerPart
   ].filter((line): line is { label: string; text: string } => Boolean(line));
 }
 
+/** The bottle's Stop answers a question nobody may have asked yet: what wants a person stands before it, save a bottle that works again. */
+function rank(row: CallRow, judged: AssessmentBody): number {
+  const asked = row.name === 'bottle' && row.state === 'Stop' && judged.calls.bottle.kind !== 'refermentation';
+  return asked ? STATE_WORDS.indexOf('Ready') + 0.5 : STATE_WORDS.indexOf(row.state);
+}
+
 /** All calls of a batch, what wants a person first. */
 export function callRows(batch: Pick<BatchBody, 'neck' | 'alerts' | 'original_gravity'>, judged: AssessmentBody, now: number, timeZone: string): CallRow[] {
   const rows = CALL_NAMES.map((name): CallRow => {
@@ -90,7 +96,7 @@ export function callRows(batch: Pick<BatchBody, 'neck' | 'alerts' | 'original_gr
       takenBy: alert?.taken_by ?? null,
     };
   });
-  return rows.sort((a, b) => STATE_WORDS.indexOf(a.state) - STATE_WORDS.indexOf(b.state) || ORDER.indexOf(a.name) - ORDER.indexOf(b.name));
+  return rows.sort((a, b) => rank(a, judged) - rank(b, judged) || ORDER.indexOf(a.name) - ORDER.indexOf(b.name));
 }
 
 /** Loud calls are shown with their evidence open. */

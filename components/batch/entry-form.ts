@@ -1,10 +1,10 @@
-import { createEntry, type ENTRY_KINDS } from '@/lib/contracts/batches';
+import { createEntry, type LOGGED_KINDS } from '@/lib/contracts/batches';
 import type { Neck } from '@/lib/core/types';
 import type { NewEntry } from '@/lib/client/entries';
 import { instantOf, wallTime } from '@/components/charts/zone';
 import { typedGravity, typedNumber } from './figures';
 
-export type EntryKind = (typeof ENTRY_KINDS)[number];
+export type EntryKind = (typeof LOGGED_KINDS)[number];
 
 /** The form as it is typed: every field text. */
 export interface EntryDraft {

@@ -15,6 +15,13 @@ const DRAWN: Record<LogKind, ReactNode> = {
   addition: <path d="M10 3v14M3 10h14" />,
   top_up: <path d="M5 8v9.500h10V8M10 2v8.500M7 7.500l3 3 3-3" />,
   stabilise: <path d="M6 9V6a4 4 0 0 1 8 0v3M4 9h12v8.500H4Z" />,
+  // a drop into a vessel, and what falls
+  fining: <path d="M10 1.500c1.6 2 2.400 3.300 2.400 4.400a2.400 2.400 0 0 1-4.800 0c0-1.100.8-2.400 2.400-4.400ZM4 11v6.500h12V11M6.500 15.500h7" />,
+  // one into two, two into one
+  split: <path d="M10 2.500v5M10 7.500 4.500 13v4.500M10 7.500l5.500 5.500v4.500" />,
+  blend: <path d="M4.500 2.500V7l5.500 5.500L15.500 7V2.500M10 12.500v5" />,
+  // a bottle
+  bottling: <path d="M8.200 2h3.600v5c1.800 1 2.700 2.400 2.700 4v7h-9v-7c0-1.600.9-3 2.700-4Z" />,
   // the program's own line
   call: <path d="M1.5 10.500h4l2-6 4 11 2.2-5h4.8" />,
 };
@@ -38,5 +45,9 @@ export const LOG_KIND_WORDS: Record<LogKind, string> = {
   addition: 'Addition',
   top_up: 'Topping up',
   stabilise: 'Stabilising',
+  fining: 'Fining',
+  split: 'Split',
+  blend: 'Blend',
+  bottling: 'Bottling',
   call: 'Call',
 };

@@ -1,5 +1,6 @@
 import type { VerdictChangeList } from '@/lib/contracts/assessment';
 import type { EntryBody } from '@/lib/contracts/batches';
+import { CALL_NAMES } from '@/lib/core/types';
 import { clock, wallTime, MONTHS } from '@/components/charts/zone';
 import { degrees, grams, gravityText, litres } from './figures';
 import { NECK_WORDS } from './words';
@@ -31,7 +32,7 @@ function additionWords(entry: EntryBody): string {
     entry.fruit_g ? `${grams(entry.fruit_g)} fruit` : null,
     entry.volume_l ? `${litres(entry.volume_l)} liquid${entry.gravity === null ? '' : ` at ${gravityText(entry.gravity)}`}` : null,
   ].filter((part) => part !== null);
-  if (parts.length === 0) return entry.text ? 'Added:' : 'Something added.';
+  if (parts.length === 0) return 'Something added.';
   return `Added ${parts.length > 1 ? `${parts.slice(0, -1).join(', ')} and ${parts.at(-1)}` : parts[0]}.`;
 }
 
@@ -58,27 +59,46 @@ export function entryWords(entry: EntryBody): string {
       return entry.volume_l === null ? 'Topped up.' : `Topped up with ${litres(entry.volume_l)}${entry.gravity === null ? '' : ` at ${gravityText(entry.gravity)}`}.`;
     case 'stabilise':
       return 'Stabilised.';
+    case 'fining':
+      return entry.detail?.dose === 'b' ? 'Fined, second dose.' : entry.detail?.dose === 'a' ? 'Fined, first dose.' : 'Fined.';
+    case 'split':
+      return entry.volume_l === null ? 'Split.' : `Split, ${litres(entry.volume_l)} went over.`;
+    case 'blend':
+      return entry.volume_l === null ? 'Blended.' : `Blended, ${litres(entry.volume_l)}.`;
+    case 'bottling':
+      return entry.volume_l === null ? 'Bottled.' : `Bottled, ${litres(entry.volume_l)}.`;
     case 'observation':
     case 'note':
       return '';
   }
 }
 
+/** Where the person said it in their own words, ours are kept only for their figures. */
+const wordsBeside = (entry: EntryBody): string => {
+  const words = entryWords(entry);
+  return entry.text !== null && !/\d/.test(words) ? '' : words;
+};
+
 const rowOf = (entry: EntryBody): LogRow => ({
   id: entry.id,
   at: Date.parse(entry.at) / 1000,
   kind: entry.kind,
-  text: entryWords(entry),
+  text: wordsBeside(entry),
   own: entry.text,
   figure: (entry.kind === 'reading' || entry.kind === 'pitch') && entry.gravity !== null ? gravityText(entry.gravity) : null,
   who: entry.person?.name ?? 'Fallbright',
   mine: entry.mine,
 });
 
-/** What the program came to think, one line a change; a call that only lost its data says nothing worth keeping here. */
+/**
+ * What the program came to think, one line a change; a call that only lost its
+ * data says nothing worth keeping. The first judgement changes every call: of it
+ * only what is so is told, not all that is not.
+ */
 function callRows(changes: VerdictChangeList['items']): LogRow[] {
   return changes.flatMap((change) => {
-    const said = change.changed.map((name) => change.assessment.calls[name]).filter((call) => call.verdict !== 'unknown');
+    const first = change.changed.length === CALL_NAMES.length;
+    const said = change.changed.map((name) => change.assessment.calls[name]).filter((call) => call.verdict !== 'unknown' && !(first && call.verdict === 'no'));
     if (said.length === 0) return [];
     return [{ id: `call ${change.at}`, at: Date.parse(change.at) / 1000, kind: 'call' as const, text: said.map((call) => call.headline).join(' '), own: null, figure: null, who: 'Fallbright', mine: false }];
   });
@@ -91,7 +111,7 @@ export function logRows(entries: readonly EntryBody[], changes: VerdictChangeLis
 
 const BY_FILTER: Record<Exclude<LogFilter, 'all'>, readonly LogKind[]> = {
   readings: ['reading', 'pitch'],
-  additions: ['addition', 'top_up', 'stabilise', 'rack', 'neck'],
+  additions: ['addition', 'top_up', 'stabilise', 'rack', 'neck', 'fining', 'split', 'blend', 'bottling'],
   notes: ['note', 'observation'],
   calls: ['call'],
 };

@@ -28,6 +28,14 @@ export function postWords(event: Event): { letters: string; word: string } | nul
       if (event.neck === 'airlock') return { letters: 'A', word: 'airlock on' };
       if (event.neck === 'blow_off') return { letters: 'B', word: 'tube on' };
       return event.neck === 'bung' ? { letters: 'Bu', word: 'bung in' } : { letters: 'O', word: 'neck open' };
+    case 'fining':
+      return { letters: 'F', word: 'fined' };
+    case 'split':
+      return { letters: 'Sp', word: 'split' };
+    case 'blend':
+      return { letters: 'Bl', word: 'blended' };
+    case 'bottling':
+      return { letters: 'Bt', word: 'bottled' };
     case 'reading':
     case 'observation':
     case 'note':
@@ -97,7 +105,7 @@ export function pictureOf(
   const { batch, series, drawn, entries } = parts;
   const { assessment } = batch;
   const rings = entries
-    .flatMap((entry) => (entry.kind === 'reading' && entry.gravity !== null ? [{ at: seconds(entry.at), gravity: entry.gravity }] : []))
+    .flatMap((entry) => ((entry.kind === 'reading' || entry.kind === 'pitch') && entry.gravity !== null ? [{ at: seconds(entry.at), gravity: entry.gravity }] : []))
     .sort((a, b) => a.at - b.at);
   const points = (curve: JudgementBody['curve'] | undefined) => (curve ?? []).map((point) => ({ ...point, at: seconds(point.at) }));
   const sensor = assessment?.calls.sensor;

@@ -23,6 +23,9 @@ export class Batch extends Model<InferAttributes<Batch>, InferCreationAttributes
   declare temperatureMaxC: CreationOptional<number | null>;
   declare state: CreationOptional<'working' | 'ended'>;
   declare endedAt: CreationOptional<Date | null>;
+  declare mustVersionId: CreationOptional<string | null>;
+  /** Part of what the must sheet made that is in this batch, 0 to 1. */
+  declare mustShare: CreationOptional<number>;
   declare createdBy: CreationOptional<string | null>;
   declare createdAt: CreationOptional<Date>;
   declare updatedAt: CreationOptional<Date>;
@@ -51,6 +54,8 @@ export class Batch extends Model<InferAttributes<Batch>, InferCreationAttributes
         temperatureMaxC: DataTypes.DOUBLE,
         state: DataTypes.TEXT,
         endedAt: DataTypes.DATE,
+        mustVersionId: DataTypes.UUID,
+        mustShare: DataTypes.DOUBLE,
         createdBy: DataTypes.UUID,
         createdAt: DataTypes.DATE,
         updatedAt: DataTypes.DATE,

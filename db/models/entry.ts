@@ -16,6 +16,9 @@ export class Entry extends Model<InferAttributes<Entry>, InferCreationAttributes
   declare volumeL: CreationOptional<number | null>;
   declare sugarG: CreationOptional<number | null>;
   declare fruitG: CreationOptional<number | null>;
+  /** What else was measured or went in, in the wire's names. */
+  declare detail: CreationOptional<Record<string, unknown> | null>;
+  declare revisedAt: CreationOptional<Date | null>;
   declare personId: CreationOptional<string | null>;
   declare clientId: CreationOptional<string | null>;
   declare createdAt: CreationOptional<Date>;
@@ -39,6 +42,8 @@ export class Entry extends Model<InferAttributes<Entry>, InferCreationAttributes
         volumeL: DataTypes.DOUBLE,
         sugarG: DataTypes.DOUBLE,
         fruitG: DataTypes.DOUBLE,
+        detail: DataTypes.JSONB,
+        revisedAt: DataTypes.DATE,
         personId: DataTypes.UUID,
         clientId: DataTypes.UUID,
         createdAt: DataTypes.DATE,

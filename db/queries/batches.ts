@@ -26,6 +26,7 @@ export interface BatchRow {
   endedAt: Date | null;
   createdAt: Date;
   createdAtText: string;
+  must: { id: string; versionId: string; name: string; version: number } | null;
   sensor: { id: string; name: string; lastHeardAt: string | null } | null;
   /** The wire form, as it was written. */
   assessment: unknown;
@@ -59,9 +60,11 @@ export function findBatches(filter: BatchFilter, transaction?: Transaction): Pro
        b.attenuation_min_percent as "attenuationMinPercent", b.attenuation_max_percent as "attenuationMaxPercent",
        b.alcohol_tolerance_abv as "alcoholToleranceAbv", b.temperature_min_c as "temperatureMinC", b.temperature_max_c as "temperatureMaxC",
        b.state, b.ended_at as "endedAt", b.created_at as "createdAt", b.created_at::text as "createdAtText",
+       case when mv.id is not null then json_build_object('id', mv.must_id, 'versionId', mv.id, 'name', mv.body->>'name', 'version', mv.version) end as must,
        s.sensor, st.assessment, ${filter.withCurve ? 'st.curve, st.expected' : 'null as curve, null as expected'}, coalesce(al.alerts, '[]') as alerts
      from batches b
      left join batch_states st on st.batch_id = b.id
+     left join must_versions mv on mv.id = b.must_version_id
      left join lateral (
        select json_build_object('id', s.identifier, 'name', s.name, 'lastHeardAt', l.received_at) as sensor
        from assignments a join sensors s on s.id = a.sensor_id left join sensor_latest l on l.sensor_id = s.id

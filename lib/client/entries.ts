@@ -1,7 +1,7 @@
 'use client';
 
 import type { z } from 'zod';
-import type { createEntry as createEntrySchema, EntryBody, entryList } from '../contracts/batches';
+import type { createEntry as createEntrySchema, EntryBody, entryList, RevisionList, UpdateEntry } from '../contracts/batches';
 import { isOfBatch } from './batches';
 import { sendJson, withQuery } from './fetcher';
 import { isPath, refresh, useResource } from './use-resource';
@@ -26,4 +26,17 @@ export async function createEntry(batchId: string, input: NewEntry): Promise<Ent
 export async function removeEntry(batchId: string, entryId: string): Promise<void> {
   await sendJson('DELETE', `/batches/${batchId}/entries/${entryId}`);
   await refreshBatch(batchId);
+}
+
+/** Corrects an entry; what it said before is kept. */
+export async function updateEntry(batchId: string, entryId: string, input: UpdateEntry): Promise<EntryBody> {
+  const entry = await sendJson<EntryBody>('PATCH', `/batches/${batchId}/entries/${entryId}`, input);
+  await refreshBatch(batchId);
+  return entry;
+}
+
+/** What an entry said before each correction, newest first. */
+export function useRevisions(batchId: string, entryId: string | null) {
+  const { data, ...rest } = useResource<RevisionList>(entryId && `/batches/${batchId}/entries/${entryId}/revisions`);
+  return { revisions: data?.items, ...rest };
 }

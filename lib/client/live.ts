@@ -37,6 +37,14 @@ export function touches(change: Pick<Change, 'kind' | 'batch'>): (path: string) 
       return (path) => isPath('/alerts')(path) || shelf(path) || isPath('/batches')(path) || (change.batch ? isPath(`/batches/${change.batch}`)(path) : false);
     case 'sensor':
       return (path) => path.startsWith('/sensors') || shelf(path) || batch(path);
+    case 'must':
+      return (path) => path.startsWith('/musts') || path.startsWith('/catalogue');
+    case 'job':
+      return (path) => isPath('/jobs')(path);
+    case 'lot':
+      return (path) => path.startsWith('/lots') || path.startsWith('/places') || isPath('/jobs')(path) || batch(path);
+    case 'share':
+      return (path) => path.startsWith('/shares') || batch(path);
   }
 }
 

@@ -74,6 +74,8 @@ export const createBatch = z
     temperature_max_c: batchFields.temperature_max_c.default(null),
     /** Identifier of a sensor to put in from the pitch on. */
     sensor: z.string().max(64).nullable().default(null),
+    /** The version of a must sheet that it is made from. */
+    must_version_id: id.nullable().default(null),
   })
   .superRefine(checkSpans);
 export type CreateBatch = z.infer<typeof createBatch>;
@@ -88,6 +90,8 @@ export const batchSchema = z.object({
   state: z.enum(BATCH_STATES),
   ended_at: z.string().nullable(),
   created_at: z.string(),
+  /** The must sheet it was made from, in the version that it keeps. */
+  must: z.object({ id, version_id: id, name: z.string(), version: z.number().int() }).nullable(),
   /** The sensor that is in it now. */
   sensor: z.object({ id: z.string(), name: z.string(), last_heard_at: z.string().nullable() }).nullable(),
   /** The last judgement kept, or null before the first. */
@@ -106,37 +110,104 @@ export const batchQuery = z.object({
   limit: z.coerce.number().int().min(1).max(200).default(100),
 });
 
-export const ENTRY_KINDS = ['pitch', 'reading', 'observation', 'neck', 'rack', 'addition', 'top_up', 'stabilise', 'note'] as const;
+export const ENTRY_KINDS = ['pitch', 'reading', 'observation', 'neck', 'rack', 'addition', 'top_up', 'stabilise', 'note', 'fining', 'split', 'blend', 'bottling'] as const;
+/** Those that somebody logs by themselves; the others come with the work they are part of. */
+export const LOGGED_KINDS = ['pitch', 'reading', 'observation', 'neck', 'rack', 'addition', 'top_up', 'stabilise', 'note'] as const;
+
+export const CLARITIES = ['cloudy', 'hazy', 'clearing', 'bright'] as const;
+export const FOAMS = ['none', 'ring', 'cover', 'at_neck'] as const;
+export const INSTRUMENTS = ['hydrometer', 'refractometer'] as const;
+/** What an addition is made of. */
+export const SUBSTANCES = ['sugar', 'honey', 'fruit', 'juice', 'nutrient', 'acid', 'chalk', 'tannin', 'enzyme', 'sulphite', 'sorbate', 'sweetener', 'fining', 'yeast', 'spice', 'water', 'other'] as const;
+
+const measure = (min: number, max: number, unit: string) => z.number('must be a number').min(min, `must be between ${min} and ${max} ${unit}`.trim()).max(max, `must be between ${min} and ${max} ${unit}`.trim()).nullable().optional();
+
+/** What was measured or looked at, and what exactly went in: all of it optional. */
+export const entryDetail = z.object({
+  instrument: z.enum(INSTRUMENTS).nullable().optional(),
+  /** What a refractometer showed; the gravity is reckoned from it. */
+  brix: measure(0, 60, '°Bx'),
+  ph: measure(2, 8, ''),
+  titratable_acid_g_per_l: measure(0, 30, 'g/L'),
+  free_sulphite_mg_l: measure(0, 500, 'mg/L'),
+  bubbles_per_minute: measure(0, 1000, ''),
+  clarity: z.enum(CLARITIES).nullable().optional(),
+  foam: z.enum(FOAMS).nullable().optional(),
+  smell: text(300).nullable().optional(),
+  taste: text(300).nullable().optional(),
+  substance: z.enum(SUBSTANCES).nullable().optional(),
+  /** Its name on the packet, or as the catalogue has it. */
+  name: line(80).nullable().optional(),
+  /** Key of the catalogue: the sugar it brings is then reckoned. */
+  ingredient: z.string().regex(/^[a-z0-9-]{1,60}$/).nullable().optional(),
+  grams: measure(0, 200_000, 'g'),
+  /** Left on the lees and in the hose by a racking. */
+  left_l: measure(0, 2000, 'L'),
+  /** Of a fermented drink that was added, SG. */
+  original_gravity: gravity.nullable().optional(),
+  /** Which dose of a fining, and of which. */
+  dose: z.enum(['a', 'b', 'only']).nullable().optional(),
+  /** The other batch or the lot that this was about. */
+  batch_id: id.nullable().optional(),
+  lot_id: id.nullable().optional(),
+  fining_id: id.nullable().optional(),
+});
+export type EntryDetail = z.infer<typeof entryDetail>;
 
 const amount = (unit: string, max: number) => z.number(`must be a number of ${unit}`).min(0, 'must not be negative').max(max, `must be at most ${max} ${unit}`);
+
+const entryFields = {
+  at: timestamp,
+  text: text(2000).nullable(),
+  /** Hydrometer reading (`reading`), or gravity of a liquid added (`addition`, `top_up`). */
+  gravity: gravity.nullable(),
+  /** Of the sample, for a reading. */
+  temperature_c: temperatureC.nullable(),
+  /** The hydrometer's own calibration temperature, °C. */
+  calibrated_at_c: z.number().min(0).max(40).nullable(),
+  neck: z.enum(NECKS).nullable(),
+  volume_l: amount('L', 2000).nullable(),
+  sugar_g: amount('g', 200_000).nullable(),
+  fruit_g: amount('g', 200_000).nullable(),
+  detail: entryDetail.nullable(),
+};
+
+type EntryFacts = { kind: (typeof ENTRY_KINDS)[number]; text: string | null; gravity: number | null; neck: string | null; volume_l: number | null; sugar_g: number | null; fruit_g: number | null; detail: EntryDetail | null };
+
+/** What an entry of each kind has to say; asked when it is written and when it is corrected. */
+export function checkEntry(value: EntryFacts, tell: (path: string, message: string) => void): void {
+  const detail = Object.values(value.detail ?? {}).some((item) => item !== null && item !== undefined);
+  if (value.kind === 'reading' && value.gravity === null && typeof value.detail?.brix !== 'number') tell('gravity', 'is needed for a reading');
+  if (value.kind === 'neck' && value.neck === null) tell('neck', 'choose what closes the neck now');
+  if ((value.kind === 'note' || value.kind === 'observation') && value.text === null && !detail) tell('text', 'write what you saw');
+  if (value.kind === 'addition' && value.sugar_g === null && value.fruit_g === null && value.volume_l === null && value.text === null && !detail) tell('sugar_g', 'say what went in');
+}
+
+const tellIssue = (context: z.RefinementCtx) => (path: string, message: string) => context.addIssue({ code: 'custom', path: [path], message });
 
 /** `POST /api/v1/batches/{id}/entries`: something that happened to a batch. */
 export const createEntry = z
   .object({
-    kind: z.enum(ENTRY_KINDS, 'choose what happened'),
-    at: timestamp,
-    text: text(2000).nullable().default(null),
-    /** Hydrometer reading (`reading`), or gravity of a liquid added (`addition`, `top_up`). */
-    gravity: gravity.nullable().default(null),
-    /** Of the sample, for a reading. */
-    temperature_c: temperatureC.nullable().default(null),
-    /** The hydrometer's own calibration temperature, °C. */
-    calibrated_at_c: z.number().min(0).max(40).nullable().default(null),
-    neck: z.enum(NECKS).nullable().default(null),
-    volume_l: amount('L', 2000).nullable().default(null),
-    sugar_g: amount('g', 200_000).nullable().default(null),
-    fruit_g: amount('g', 200_000).nullable().default(null),
+    kind: z.enum(LOGGED_KINDS, 'choose what happened'),
+    at: entryFields.at,
+    text: entryFields.text.default(null),
+    gravity: entryFields.gravity.default(null),
+    temperature_c: entryFields.temperature_c.default(null),
+    calibrated_at_c: entryFields.calibrated_at_c.default(null),
+    neck: entryFields.neck.default(null),
+    volume_l: entryFields.volume_l.default(null),
+    sugar_g: entryFields.sugar_g.default(null),
+    fruit_g: entryFields.fruit_g.default(null),
+    detail: entryFields.detail.default(null),
     /** Made by the sender, so that sending twice keeps one. */
     client_id: z.uuid().nullable().default(null),
   })
-  .superRefine((value, context) => {
-    const need = (path: string, message: string) => context.addIssue({ code: 'custom', path: [path], message });
-    if (value.kind === 'reading' && value.gravity === null) need('gravity', 'is needed for a reading');
-    if (value.kind === 'neck' && value.neck === null) need('neck', 'choose what closes the neck now');
-    if ((value.kind === 'note' || value.kind === 'observation') && value.text === null) need('text', 'write what you saw');
-    if (value.kind === 'addition' && value.sugar_g === null && value.fruit_g === null && value.volume_l === null && value.text === null) need('sugar_g', 'say what went in');
-  });
+  .superRefine((value, context) => checkEntry(value, tellIssue(context)));
 export type CreateEntry = z.infer<typeof createEntry>;
+
+/** `PATCH /api/v1/batches/{id}/entries/{entryId}`: a correction; what it leaves out stays, and what was there before is kept. */
+export const updateEntry = z.object(entryFields).partial().refine((value) => Object.keys(value).length > 0, { path: ['body'], message: 'say what to correct' });
+export type UpdateEntry = z.infer<typeof updateEntry>;
 
 export const entrySchema = z.object({
   id,
@@ -153,6 +224,9 @@ export const entrySchema = z.object({
   volume_l: z.number().nullable(),
   sugar_g: z.number().nullable(),
   fruit_g: z.number().nullable(),
+  detail: entryDetail.nullable(),
+  /** Corrected since it was written; what it said before is kept. */
+  revised: z.boolean(),
   /** Null: the program wrote it. */
   person: z.object({ id, name: z.string() }).nullable(),
   created_at: z.string(),
@@ -161,6 +235,10 @@ export const entrySchema = z.object({
 });
 export type EntryBody = z.infer<typeof entrySchema>;
 export const entryList = z.object({ items: z.array(entrySchema), next_cursor: z.string().nullable() });
+
+/** What an entry said before each correction, newest first. */
+export const revisionList = z.object({ items: z.array(z.object({ at: z.string(), by: z.object({ id, name: z.string() }).nullable(), before: entrySchema.pick({ at: true, text: true, gravity: true, gravity_read: true, temperature_c: true, neck: true, volume_l: true, sugar_g: true, fruit_g: true, detail: true }) })) });
+export type RevisionList = z.infer<typeof revisionList>;
 
 /** `GET /api/v1/batches/{id}/series`. */
 export const seriesQuery = z.object({

@@ -1,36 +1,17 @@
 import { z } from 'zod';
-import type { Action } from '../core/actions';
 import { acknowledgeAlert, alertList, alertQuery, alertSchema, resolveAlert } from './alerts';
 import { assessmentQuery, assessmentSchema, judgementSchema, verdictChangeList } from './assessment';
 import { batchList, batchQuery, batchSchema, createBatch, createEntry, entryList, entrySchema, seriesQuery, seriesSchema, shelfQuery, shelfSchema, updateBatch } from './batches';
 import { id, pageQuery } from './common';
+import { byId, endpoint, type Endpoint } from './endpoint';
+import { endpointsAfter } from './endpoints-after';
+import { endpointsBefore } from './endpoints-before';
 import { chooseCellar, meSchema, memberList, signInList } from './people';
 import { createdSensorSchema, createSensor, refusedList, sensorList, sensorSchema, updateSensor } from './sensors';
 import { reading, telemetryResult } from './telemetry';
 
-/**
- * Who may call it: a role's action in the active cellar, any member of a cellar,
- * anybody signed in, a sensor with its secret, or anyone.
- */
-export type Access = Action | 'member' | 'person' | 'sensor' | 'anyone';
+export type { Access, Endpoint } from './endpoint';
 
-export interface Endpoint {
-  method: 'GET' | 'POST' | 'PATCH' | 'DELETE';
-  /** Below `/api/v1`, as OpenAPI writes it. */
-  path: string;
-  summary: string;
-  access: Access;
-  params?: z.ZodObject;
-  query?: z.ZodType;
-  body?: z.ZodType;
-  /** Null: no JSON body. */
-  response: z.ZodType | null;
-  status: 200 | 201 | 202 | 204;
-}
-
-const endpoint = <const E extends Endpoint>(definition: E) => definition;
-
-const byId = z.object({ id });
 /** A sensor's identifier is not a UUID. */
 const bySensor = z.object({ id: z.string().regex(/^[a-z0-9-]{4,64}$/) });
 
@@ -65,6 +46,9 @@ export const endpoints = {
   listAlerts: endpoint({ method: 'GET', path: '/alerts', summary: 'Alerts, open ones first', access: 'alerts.read', query: alertQuery, response: alertList, status: 200 }),
   acknowledgeAlert: endpoint({ method: 'POST', path: '/alerts/{id}/acknowledge', summary: 'Take an alert in hand', access: 'alerts.acknowledge', params: byId, body: acknowledgeAlert, response: alertSchema, status: 200 }),
   resolveAlert: endpoint({ method: 'POST', path: '/alerts/{id}/resolve', summary: 'Clear an alert', access: 'alerts.resolve', params: byId, body: resolveAlert, response: alertSchema, status: 200 }),
+
+  ...endpointsBefore,
+  ...endpointsAfter,
 
   streamEvents: endpoint({ method: 'GET', path: '/events', summary: 'Server-sent events: `change` says what to ask for again, `beat` that the line is up', access: 'batches.read', response: null, status: 200 }),
   postTelemetry: endpoint({ method: 'POST', path: '/telemetry', summary: 'Readings of a sensor, as over MQTT; also SenML JSON (RFC 8428)', access: 'sensor', body: z.union([reading, z.array(reading).max(500)]), response: telemetryResult, status: 202 }),

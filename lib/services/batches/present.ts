@@ -29,6 +29,7 @@ export function presentBatch(row: BatchRow, actor: Actor): BatchBody {
     state: row.state,
     ended_at: iso(row.endedAt),
     created_at: row.createdAt.toISOString(),
+    must: row.must && { id: row.must.id, version_id: row.must.versionId, name: row.must.name, version: row.must.version },
     sensor: row.sensor && { id: row.sensor.id, name: row.sensor.name, last_heard_at: iso(row.sensor.lastHeardAt) },
     // Written by the worker in this form; the response schema checks it again.
     assessment: row.assessment as AssessmentBody | null,

@@ -3,7 +3,7 @@ import { Entry } from '@/db/models';
 import { authorize } from '@/lib/auth/authorize';
 import type { Action, Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
-import type { CreateEntry, ENTRY_KINDS, EntryBody } from '@/lib/contracts/batches';
+import type { CreateEntry, EntryBody, LOGGED_KINDS } from '@/lib/contracts/batches';
 import { correctHydrometer } from '@/lib/core/gravity/hydrometer';
 import { ConflictError, InvalidError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
@@ -14,7 +14,7 @@ import { namesOf } from './names';
 import { presentEntry } from './present';
 
 /** Looking and writing down is a hand's work; what changes the drink is the brewer's. */
-const ACTION: Record<(typeof ENTRY_KINDS)[number], Action> = {
+const ACTION: Record<(typeof LOGGED_KINDS)[number], Action> = {
   reading: 'entries.create',
   observation: 'entries.create',
   note: 'entries.create',
@@ -73,6 +73,7 @@ export async function createEntry(actor: Actor, batchId: string, input: CreateEn
           volumeL: input.volume_l,
           sugarG: input.sugar_g,
           fruitG: input.fruit_g,
+          detail: input.detail,
           personId: actor.personId,
           clientId: input.client_id,
         },

@@ -23,6 +23,8 @@ export function presentEntry(entry: Entry, actor: Actor, names: ReadonlyMap<stri
     volume_l: entry.volumeL,
     sugar_g: entry.sugarG,
     fruit_g: entry.fruitG,
+    detail: (entry.detail ?? null) as EntryBody['detail'],
+    revised: (entry.revisedAt ?? null) !== null,
     person: entry.personId !== null && name !== undefined ? { id: entry.personId, name } : null,
     created_at: entry.createdAt.toISOString(),
     mine: mayRemove(actor, entry),
