@@ -50,7 +50,8 @@ export const MISTOLD_GROUPS: readonly (readonly [string, number])[] = [
   ['no yeast told', 8],
 ];
 
-const PITCHED = Date.UTC(2026, 1, 20, 18);
+/** The true pitch of every batch. */
+export const PITCHED = Date.UTC(2026, 1, 20, 18);
 const LONG_H = 24 * 160;
 
 function yeastOf(kind: DrinkKind, r: Random): Yeast {

@@ -21,6 +21,9 @@ export interface Forecasts {
   dateError: number[];
   dateIn80: number;
   dates: number;
+  /** Errors in units of the promised standard deviation: plainly, and of the logarithm of the time to go. */
+  finalZ: number[];
+  dateZ: number[];
 }
 
 export interface Score {
@@ -38,7 +41,7 @@ export interface Score {
   rateErrors: number[];
 }
 
-const newForecasts = (): Forecasts => ({ finalError: [], in80: 0, in95: 0, width80: [], dateError: [], dateIn80: 0, dates: 0 });
+const newForecasts = (): Forecasts => ({ finalError: [], in80: 0, in95: 0, width80: [], dateError: [], dateIn80: 0, dates: 0, finalZ: [], dateZ: [] });
 
 export function newScore(): Score {
   return {
@@ -119,6 +122,7 @@ function addForecasts(score: Score, batch: Case, truths: Truths, looks: readonly
     const tally = score.forecasts[share];
     if (look?.finalGravity) {
       tally.finalError.push(Math.abs(look.finalGravity.value - final));
+      tally.finalZ.push((1.2816 * (final - look.finalGravity.value)) / Math.max(0.05, (look.finalGravity.hi - look.finalGravity.lo) / 2));
       tally.width80.push(look.finalGravity.hi - look.finalGravity.lo);
       if (final >= look.finalGravity.lo && final <= look.finalGravity.hi) tally.in80 += 1;
       if (final >= look.finalGravity.lo95 && final <= look.finalGravity.hi95) tally.in95 += 1;
@@ -126,6 +130,9 @@ function addForecasts(score: Score, batch: Case, truths: Truths, looks: readonly
     if (look?.terminalHour) {
       tally.dateError.push(Math.abs(look.terminalHour.value - end) / 24);
       tally.dates += 1;
+      const togo = (at: number): number => Math.log(Math.max(1, at - look.hour + 12));
+      const spread = (togo(look.terminalHour.hi) - togo(look.terminalHour.lo)) / 2 / 1.2816;
+      if (spread > 0) tally.dateZ.push((togo(end) - togo(look.terminalHour.value)) / spread);
       if (end >= look.terminalHour.lo && end <= look.terminalHour.hi) tally.dateIn80 += 1;
     }
   }

@@ -2,7 +2,7 @@ import type { BatchEvent, BatchSetup, Instant, Reading } from '../types';
 import { appendBin, binFrom, newBins, type Bins } from './bins';
 import { robustLine, type Line } from './line';
 import { fitTail, type Tail } from './tail';
-import { median, medianInPlace } from './order';
+import { medianInPlace } from './order';
 
 export const HOUR_MS = 3_600_000;
 const USUAL_C = 20;
