@@ -23,6 +23,8 @@ export interface MailServer {
   connections(): number;
   /** Decides for each mail, with how many came before it. */
   temper: (count: number) => Temper;
+  /** How long it thinks before it says that it has a mail, ms. */
+  slowMs: number;
   stop(): Promise<void>;
 }
 
@@ -30,7 +32,7 @@ export interface MailServer {
 export async function startMailServer(port = 0): Promise<MailServer> {
   let count = 0;
   let connections = 0;
-  const held: MailServer = { port, url: '', taken: [], connections: () => connections, temper: () => 'takes', stop: async () => undefined };
+  const held: MailServer = { port, url: '', taken: [], connections: () => connections, temper: () => 'takes', slowMs: 0, stop: async () => undefined };
 
   const options: SMTPServerOptions = {
     disabledCommands: ['AUTH', 'STARTTLS'],
@@ -42,14 +44,16 @@ export async function startMailServer(port = 0): Promise<MailServer> {
     onData(stream, session, callback) {
       const temper = held.temper(count);
       count += 1;
-      void simpleParser(stream).then((mail) => {
+      const take = (mail: ParsedMail) => {
         if (temper === 'later') return callback(Object.assign(new Error('try again later'), { responseCode: 451 }));
         if (temper === 'refuses') return callback(Object.assign(new Error('no such mailbox'), { responseCode: 550 }));
         if (temper === 'hangs') return;
         held.taken.push({ to: session.envelope.rcptTo.map((item) => item.address), subject: mail.subject ?? '', messageId: mail.messageId ?? '', inReplyTo: mail.inReplyTo ?? null, text: mail.text ?? '', mail });
-        if (temper === 'takes') return callback();
+        if (temper === 'takes') return void setTimeout(callback, held.slowMs);
         for (const connection of server.connections) (connection as unknown as { _socket: { destroy(): void } })._socket.destroy();
-      });
+      };
+      // A sender that dies in the middle of a mail has sent none.
+      simpleParser(stream).then(take, () => undefined);
     },
   };
   const server = new SMTPServer(options);
