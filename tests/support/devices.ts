@@ -38,14 +38,17 @@ export class Device {
   private next: number;
   private inFlight = 0;
   private running = false;
+  private closed = false;
 
-  constructor(
-    private readonly options: DeviceOptions & { inFlight?: number; everyMs?: number; from?: number },
-  ) {
+  constructor(private readonly options: DeviceOptions & { inFlight?: number; everyMs?: number; from?: number }) {
     this.next = options.from ?? Date.parse('2026-02-01T00:00:00Z');
     const { inFlight: _inFlight, everyMs: _everyMs, from: _from, ...rest } = options;
     this.client = openClient({ reconnectPeriod: 100, connectTimeout: 5_000, reconnectOnConnackError: true, ...rest });
     this.client.on('connect', () => (this.reconnects += 1));
+  }
+
+  get sensor(): string {
+    return this.options.sensor;
   }
 
   /** Sends readings one after another until {@link stop}, never more than `inFlight` open. */
@@ -68,21 +71,30 @@ export class Device {
   }
 
   close(): Promise<void> {
+    this.stop();
+    this.closed = true;
     return this.client.endAsync(true);
   }
 
   private pump(): void {
-    while (this.running && this.inFlight < (this.options.inFlight ?? 1)) this.send();
+    while (this.running && this.inFlight < (this.options.inFlight ?? 1)) {
+      const at = new Date(this.next).toISOString();
+      this.next += 1_000;
+      this.sent.push(at);
+      this.inFlight += 1;
+      this.send(at, this.sent.length);
+    }
   }
 
-  private send(): void {
-    const at = new Date(this.next).toISOString();
-    this.next += 1_000;
-    this.inFlight += 1;
-    this.sent.push(at);
-    this.client.publish(readingsTopic(this.options.sensor), JSON.stringify({ at, gravity: 1.05, temperature: 19.5, sequence: this.sent.length }), { qos: 1 }, (error) => {
+  private send(at: string, sequence: number): void {
+    this.client.publish(readingsTopic(this.options.sensor), JSON.stringify({ at, gravity: 1.05, temperature: 19.5, sequence }), { qos: 1 }, (error) => {
+      if (error) {
+        // The library gives up on what was open when a connection attempt times out; the reading is still ours to deliver.
+        if (!this.closed) setTimeout(() => this.send(at, sequence), 100);
+        return;
+      }
       this.inFlight -= 1;
-      if (!error) this.acknowledged.add(at);
+      this.acknowledged.add(at);
       setTimeout(() => this.pump(), this.options.everyMs ?? 0);
     });
   }
