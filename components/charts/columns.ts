@@ -26,27 +26,25 @@ function readingsAsCurve(picture: Picture): GravityPoint[] {
 
 const median = (values: number[]): number => values.sort((a, b) => a - b)[values.length >> 1]!;
 
-/** Medians of the readings of each hour from a time on: the level of a batch that left its curve, without its bubbles. */
-function levelFrom(picture: Picture, from: number): GravityPoint[] {
-  const hours = new Map<number, number[]>();
-  for (const point of readingsAsCurve(picture)) {
-    if (point.at < from) continue;
-    const hour = Math.floor(point.at / 3600);
-    hours.set(hour, [...(hours.get(hour) ?? []), point.gravity]);
-  }
-  return [...hours].map(([hour, values]) => {
-    const gravity = median(values);
-    return { at: Math.min(hour * 3600 + 1800, picture.now), gravity, lo: gravity, hi: gravity };
-  });
-}
+/** Readings to a median: enough that a bubble that lifts two or three of them does not show. */
+const TOGETHER = 9;
 
-/** Where it has stopped, the curve holds only until then; what follows is the level itself, up to now. */
-function knownCurve(picture: Picture, past: GravityPoint[]): { fitted: GravityPoint[]; solid: GravityPoint[] } {
-  if (!hasStopped(picture) || !picture.bracket) return { fitted: past, solid: past };
-  const fitted = cutAt(past, picture.bracket.from).past;
-  const level = levelFrom(picture, picture.bracket.from);
-  const now = level.length > 0 ? [{ ...level.at(-1)!, at: picture.now }] : [];
-  return { fitted, solid: [...fitted, ...level, ...now] };
+/**
+ * The level itself, by medians of neighbouring readings, up to now. It stands in
+ * for the fit where a batch has stopped: a curve that must also lie flat fits
+ * neither part.
+ */
+function levelOf(picture: Picture): GravityPoint[] {
+  const points = readingsAsCurve(picture);
+  const level: GravityPoint[] = [];
+  for (let start = 0; start < points.length; start += TOGETHER) {
+    const some = points.slice(start, start + TOGETHER);
+    const gravity = median(some.map((point) => point.gravity));
+    // The first begins with the record and the last ends at now, so that nothing is cut off.
+    const at = start === 0 ? some[0]!.at : start + TOGETHER >= points.length ? picture.now : some[some.length >> 1]!.at;
+    level.push({ at, gravity, lo: gravity, hi: gravity });
+  }
+  return level;
 }
 
 /**
@@ -60,11 +58,12 @@ export function columnsOf(picture: Picture, lane = false): uPlot.AlignedData {
   const { past, coming } = cutAt(fitted ? picture.curve : lane ? readingsAsCurve(picture) : [], knownUntil(picture));
   // Where the batch has stopped, the band belongs to what it should have done.
   const ahead = stopped ? [] : coming;
-  const known = knownCurve(picture, past);
-  const banded = fitted ? [...known.fitted, ...ahead.slice(1)] : [];
+  const level = stopped ? levelOf(picture) : [];
+  const solid = level.length > 0 ? level : past;
+  const banded = fitted && !stopped ? [...past, ...ahead.slice(1)] : [];
   const tables: Table[] = [
     ascending(table(banded, (point) => point.hi, (point) => point.lo)),
-    ascending(table(known.solid, (point) => point.gravity)),
+    ascending(table(solid, (point) => point.gravity)),
     ascending(table(ahead, (point) => point.gravity)),
     ascending(table(stopped ? picture.expected : [], (point) => point.hi, (point) => point.lo)),
     ascending(table(picture.expected, (point) => point.gravity)),

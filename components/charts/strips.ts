@@ -107,7 +107,7 @@ function pageLayout(picture: Picture, style: 'page' | 'phone'): Layout {
     rules,
     ticks: {
       // A round value too near the bed's own figure gives way to it.
-      gravity: roundSteps(gravity.min, gravity.max, phone ? 6 : 5).filter((value) => bed === null || Math.abs(value - bed) / (gravity.max - gravity.min) > 0.05),
+      gravity: roundSteps(gravity.min, gravity.max, phone ? 6 : 7).filter((value) => bed === null || Math.abs(value - bed) / (gravity.max - gravity.min) > 0.05),
       temperature: picture.range ? [picture.range.min, picture.range.max] : warmth ? roundSteps(warmth.min, warmth.max, 2) : [],
       gas: gas ? roundSteps(0, gas.max, phone ? 2 : 4) : [],
     },

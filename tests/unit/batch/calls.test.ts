@@ -7,17 +7,18 @@ const rows = (calls: Parameters<typeof judged>[0], over: Parameters<typeof batch
 const row = (all: ReturnType<typeof rows>, name: string) => all.find((item) => item.name === name)!;
 
 describe('the calls of a batch page', () => {
-  it('put what wants a person first, and a bottle that could burst before a stall', () => {
+  it('put what wants a person first, then the bottle that nobody may fill, then the rest', () => {
     const all = rows({ stalled: { verdict: 'yes', kind: 'stuck' }, bottle: { verdict: 'hold' }, rack: { verdict: 'no' } });
     expect(all.slice(0, 2).map((item) => [item.name, item.state])).toEqual([
-      ['bottle', 'Stop'],
       ['stalled', 'Check'],
+      ['bottle', 'Stop'],
     ]);
     expect(all).toHaveLength(7);
   });
 
-  it('call re-fermentation a Stop even where the verdict is only no', () => {
-    expect(row(rows({ bottle: { verdict: 'no', kind: 'refermentation' } }), 'bottle').state).toBe('Stop');
+  it('put a bottle that works again before all else, even where the verdict is only no', () => {
+    const all = rows({ bottle: { verdict: 'no', kind: 'refermentation' }, stalled: { verdict: 'yes', kind: 'stuck' } });
+    expect(all[0]).toMatchObject({ name: 'bottle', state: 'Stop' });
   });
 
   it('say not yet for what is a matter of time, and not known where the data say nothing', () => {

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { CALL_NAMES } from '@/lib/core/types';
 import { cursorLine } from '@/components/batch/cursor';
 import { factsOf } from '@/components/batch/facts';
 import { entryWords, filtered, logRows, logTime } from '@/components/batch/log';
@@ -48,7 +49,12 @@ describe('the log', () => {
 
   it('lists what went in as one sentence', () => {
     expect(entryWords(entry({ kind: 'addition', sugar_g: 120, fruit_g: 500, volume_l: 0.3, gravity: 1.031 }))).toBe('Added 120 g sugar, 500 g fruit and 0.3 L liquid at 1.031.');
-    expect(entryWords(entry({ kind: 'addition', text: 'yeast food' }))).toBe('Added:');
+  });
+
+  it('leaves the person’s own words alone where ours would add no figure', () => {
+    const [pitch, rack] = logRows([entry({ id: 'a', kind: 'pitch', at: hours(-1), text: 'Pitched a packet.' }), entry({ id: 'b', kind: 'rack', at: hours(-2), volume_l: 4.2, text: 'Off the lees.' })], []);
+    expect(pitch).toMatchObject({ text: '', own: 'Pitched a packet.' });
+    expect(rack).toMatchObject({ text: 'Racked, 4.2 L came over.', own: 'Off the lees.' });
   });
 
   it('stands newest first, with the program’s own lines among the people’s', () => {
@@ -59,6 +65,12 @@ describe('the log', () => {
       ['call', 'Fallbright'],
       ['note', 'Bram'],
     ]);
+  });
+
+  it('tells of the first judgement only what is so', () => {
+    const first = { at: hours(-6), changed: [...CALL_NAMES], assessment: judged({ started: { verdict: 'yes', headline: 'Working.' }, sensor: { verdict: 'no', headline: 'Sensor speaks.' } }) };
+    expect(logRows([], [first])[0]!.text).toBe('Working.');
+    expect(logRows([], [{ ...first, changed: ['sensor'] }])[0]!.text).toBe('Sensor speaks.');
   });
 
   it('keeps no line for a call that only lost its data', () => {
