@@ -29,18 +29,19 @@ export const ingredientSchema = z.object({
 });
 export type IngredientBody = z.infer<typeof ingredientSchema>;
 
-export const yeastSchema = z
-  .object({
-    name: line(80),
-    /** Apparent attenuation in wort, as fractions; null for yeasts that take all the sugar. */
-    attenuation: rangeWithin(0.2, 1.3).nullable(),
-    tolerance_abv: rangeWithin(1, 25),
-    temperature_c: z.object({ min: z.number().min(-5).max(45), max: z.number().min(-5).max(45) }),
-    nitrogen_need: z.enum(NITROGEN_NEEDS),
-    diastatic: z.boolean(),
-    status: z.enum(HOW_STATUSES),
-  })
-  .refine((yeast) => yeast.temperature_c.min <= yeast.temperature_c.max, { path: ['temperature_c', 'max'], message: 'must not be below the lower end' });
+const yeastFields = {
+  name: line(80),
+  /** Apparent attenuation in wort, as fractions; null for yeasts that take all the sugar. */
+  attenuation: rangeWithin(0.2, 1.3).nullable(),
+  tolerance_abv: rangeWithin(1, 25),
+  temperature_c: z
+    .object({ min: z.number().min(-5).max(45), max: z.number().min(-5).max(45) })
+    .refine((range) => range.min <= range.max, { path: ['max'], message: 'must not be below the lower end' }),
+  nitrogen_need: z.enum(NITROGEN_NEEDS),
+  diastatic: z.boolean(),
+};
+
+export const yeastSchema = z.object({ ...yeastFields, status: z.enum(HOW_STATUSES) });
 export type YeastBody = z.infer<typeof yeastSchema>;
 
 const own = { id: id.nullable() };
@@ -48,13 +49,13 @@ const own = { id: id.nullable() };
 /** `GET /api/v1/catalogue`: what the program knows, and what the cellar added (those have an `id`). */
 export const catalogueSchema = z.object({
   ingredients: z.array(ingredientSchema.extend(own)),
-  yeasts: z.array(yeastSchema.safeExtend(own)),
+  yeasts: z.array(yeastSchema.extend(own)),
 });
 export type CatalogueBody = z.infer<typeof catalogueSchema>;
 
 /** The key, source and status of the cellar's own are the program's to set. */
 export const ingredientForm = ingredientSchema.omit({ key: true, source: true, status: true });
-export const yeastForm = yeastSchema.omit({ status: true });
+export const yeastForm = z.object(yeastFields);
 
 /** `POST /api/v1/catalogue`, `PATCH /api/v1/catalogue/{id}`. */
 export const catalogueForm = z.discriminatedUnion('sort', [z.object({ sort: z.literal('ingredient'), ingredient: ingredientForm }), z.object({ sort: z.literal('yeast'), yeast: yeastForm })]);
@@ -62,6 +63,6 @@ export type CatalogueForm = z.infer<typeof catalogueForm>;
 
 export const catalogueItem = z.discriminatedUnion('sort', [
   z.object({ sort: z.literal('ingredient'), ingredient: ingredientSchema.extend({ id }) }),
-  z.object({ sort: z.literal('yeast'), yeast: yeastSchema.safeExtend({ id }) }),
+  z.object({ sort: z.literal('yeast'), yeast: yeastSchema.extend({ id }) }),
 ]);
 export type CatalogueItem = z.infer<typeof catalogueItem>;

@@ -96,9 +96,11 @@ export const movedSchema = z.object({
 });
 export type MovedBody = z.infer<typeof movedSchema>;
 
+const newVesselFields = { name: line(80), ...vessel, tag: vessel.tag.default(null), place: vessel.place.default(null), neck: vessel.neck.default('airlock'), vessel_kind: vessel.vessel_kind.default('demijohn') };
+
 /** A vessel that part of a batch goes into. */
 const newVessel = z
-  .object({ name: line(80), volume_l: litres(0.1), ...vessel, tag: vessel.tag.default(null), place: vessel.place.default(null), neck: vessel.neck.default('airlock'), vessel_kind: vessel.vessel_kind.default('demijohn') })
+  .object({ ...newVesselFields, volume_l: litres(0.1) })
   .refine((part) => part.volume_l <= part.vessel_l, { path: ['volume_l'], message: 'is more than the vessel holds' });
 
 /** `POST /api/v1/batches/{id}/split`: parts go into vessels of their own; what is not taken stays. */
@@ -112,7 +114,7 @@ export const blendForm = z
     ...happened,
     parts: z.array(z.object({ batch_id: id, volume_l: litres(0.01) })).min(1, 'say what goes in').max(12),
     into_batch_id: id.nullable().default(null),
-    into: newVessel.safeExtend({ drink_colour: z.union([z.enum(DRINK_COLOURS), z.string().regex(/^#[0-9a-fA-F]{6}$/)]).default('gold') }).omit({ volume_l: true }).nullable().default(null),
+    into: z.object({ ...newVesselFields, drink_colour: z.union([z.enum(DRINK_COLOURS), z.string().regex(/^#[0-9a-fA-F]{6}$/)]).default('gold') }).nullable().default(null),
   })
   .superRefine((value, context) => {
     const tell = (path: string, message: string) => context.addIssue({ code: 'custom', path: [path], message });
