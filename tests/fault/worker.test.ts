@@ -1,4 +1,4 @@
-import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest';
 import { QueryTypes } from 'sequelize';
 import { Alert, OutboxMail, type Batch } from '@/db/models';
 import { CHANGES_CHANNEL } from '@/lib/contracts/events';
@@ -16,8 +16,13 @@ const KILLS = 6;
 const SEED = 20260301;
 
 let mail: MailServer;
+let worker: Running | null = null;
 beforeAll(async () => {
   mail = await startMailServer();
+});
+afterEach(async () => {
+  worker?.kill('SIGKILL');
+  await worker?.ended;
 });
 afterAll(() => mail.stop());
 
@@ -42,7 +47,7 @@ describe('kill -9 of the worker while batches turn bad', () => {
       batches.push({ batch, sensor: (await buildSensor({ batch })).sensor.id, people });
     }
 
-    let worker: Running = await startWorker();
+    worker = await startWorker();
     const recoveries: number[] = [];
     let loading = true;
     // One batch after another turns too warm hours ago, and the worker is told.

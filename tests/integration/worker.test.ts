@@ -1,5 +1,6 @@
 import { afterAll, afterEach, beforeAll, expect, it } from 'vitest';
 import { QueryTypes } from 'sequelize';
+import type { Batch } from '@/db/models';
 import { CHANGES_CHANNEL } from '@/lib/contracts/events';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildCellar, buildMember, buildSensor, writeReadings } from '../support/factories';
@@ -109,7 +110,7 @@ it('says that it lives, drops what is old, and stops within ten seconds when tol
 it('is shared by two workers without an alert or a mail coming twice', async () => {
   const cellar = await buildCellar();
   const people = await Promise.all([buildMember('keeper', { cellarId: cellar.id }), buildMember('hand', { cellarId: cellar.id })]);
-  const batches = [];
+  const batches: Batch[] = [];
   for (let index = 0; index < 8; index += 1) {
     const pitchedAt = Math.floor(Date.now() / HOUR) * HOUR - 30 * HOUR;
     const batch = await buildBatch({ ...BEER, cellarId: cellar.id, pitchedAt: new Date(pitchedAt) });
