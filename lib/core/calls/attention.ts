@@ -92,9 +92,10 @@ function stateOfAlert(alert: OpenAlert): StateWord {
 const rank = (state: StateWord) => STATE_WORDS.indexOf(state);
 
 /** The call that has most to tell while there is nothing to do. */
-function quietCall({ calls, stage }: AttentionInput): CallName {
+function quietCall({ calls, stage, neck }: AttentionInput): CallName {
   if (stage === 'not_started' || stage === 'lag') return 'started';
   if (stage === 'unknown') return 'sensor';
+  if (neck === 'blow_off' && stage !== 'terminal') return 'neck';
   return calls.rack.verdict === 'yes' ? 'bottle' : 'rack';
 }
 

@@ -6,8 +6,8 @@ import { call, evidence, gravityWords, pointsWords, rateWords } from './words';
 export function rackCall(scene: Scene): Call {
   const { watch, level, rate } = scene;
   const top = watch.zoneTop();
-  const figures = level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG'), ...(rate ? [evidence('fall', rate.value, 1.2, 'points/d')] : [])];
-  const changesIt = `Changes it: ${gravityWords(top)} or less and a fall under 1.2 points a day.`;
+  const figures = level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG'), ...(rate ? [evidence('fall', rate.value, 2.5, 'points/d')] : [])];
+  const changesIt = `Changes it: ${gravityWords(top)} or less and about 2 points still to come.`;
   if (!watch.started.on) return call(scene.silentH === null ? 'unknown' : 'no', 'Not yet: it has not started.', 'Racking comes at the end of the fall.', { changesIt });
   if (watch.rack.on && level !== null) {
     const since = sinceOf(scene, watch.rack.since);
@@ -15,7 +15,7 @@ export function rackCall(scene: Scene): Call {
       since,
       evidence: figures,
       act: 'Rack off the lees when it suits; full to the neck, airlock on.',
-      changesIt: 'Changes it: a fall of more than 1.5 points a day.',
+      changesIt: 'Changes it: a fall of more than 3 points a day.',
     });
   }
   if (watch.stuck.on && level !== null) return call('no', 'Not yet: it has stopped early.', `${gravityWords(level)}; racking takes yeast away that is still needed.`, { evidence: figures, changesIt });
@@ -33,7 +33,7 @@ export function rackCall(scene: Scene): Call {
   });
 }
 
-/** Hours until the curve has 2 points left and falls by less than 1.2 a day; null without a curve. */
+/** Hours until the curve has 2 points left, and the looks it takes to be sure; null without a curve. */
 function hoursToRack(scene: Scene): number | null {
   const { watch, hour } = scene;
   const fit = watch.fit();
@@ -43,8 +43,7 @@ function hoursToRack(scene: Scene): number | null {
   if (drop <= 2) return 0;
   const warmth = watch.track.warmthAt(hour);
   const tau0 = watch.track.tauAt(hour) - watch.track.tauAt(watch.segment.from);
-  let tau = Math.max(tau0, curve.tauOfShare(2 / drop));
+  const tau = Math.max(tau0, curve.tauOfShare(2 / drop));
   if (!Number.isFinite(tau)) return null;
-  for (let i = 0; i < 60 && curve.rate(tau) * warmth > 1.2; i += 1) tau += 0.25;
   return ((tau - tau0) / warmth) * 24 + 9;
 }

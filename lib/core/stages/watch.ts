@@ -17,7 +17,7 @@ export const LOOK_H = 3;
 export const TERMINAL_POINTS = 1.7;
 export const BOTTLE_POINTS = 1.0;
 /** Points that are likely still to come when it may be racked. */
-export const RACK_POINTS = 2.6;
+export const RACK_POINTS = 2.2;
 /** Share of fruit that is sugar where nobody says. Common practice. */
 const FRUIT_SUGAR = 0.1;
 
@@ -80,7 +80,6 @@ export class Watch {
   private pendingLevels = false;
   private lines = new Map<number, Line | null>();
   private fitCache: { key: number; fit: CurveFit | null } | null = null;
-  private lastFit: CurveFit | null = null;
   private tailCache: Tail | null | undefined;
 
   constructor(
@@ -151,16 +150,15 @@ export class Watch {
   }
 
   /** The fitted curve; anew every 6 h to day 10, every 12 h to day 30, then once a day. */
-  fit(fresh = false): CurveFit | null {
+  fit(): CurveFit | null {
     const step = this.lookedAt < 240 ? 6 : this.lookedAt < 720 ? 12 : 24;
-    const at = fresh ? this.lookedAt : Math.floor(this.lookedAt / step + 1e-9) * step;
+    const at = Math.floor(this.lookedAt / step + 1e-9) * step;
     if (this.fitCache && this.fitCache.key === at) return this.fitCache.fit;
     const { segment } = this;
     if (segment.effectiveOg < 5) return null;
     const og: Normal = { mean: segment.level ?? segment.effectiveOg, sd: segment.restarted ? 2 : this.ogSd };
-    const fit = fitSegment(this.setup, this.track, segment, at, this.fgPrior(), og, this.lastFit?.parameters);
+    const fit = fitSegment(this.setup, this.track, segment, at, this.fgPrior(), og);
     this.fitCache = { key: at, fit };
-    this.lastFit = fit;
     return fit;
   }
 
@@ -175,23 +173,26 @@ export class Watch {
     return this.tailCache;
   }
 
-  /** Points still to fall, and how well that is known: the curve and the tail, weighted by their variances. */
+  /**
+   * Points still to fall, and how well that is known: near the end what the tail
+   * shows, held against what the yeast's range leaves to be had; before that the
+   * curve. The range counts little where the tail is clear.
+   */
   remainingNow(): { value: number; sd: number } | null {
     const level = this.levelNow();
     if (level === null) return null;
-    const fit = this.fit();
-    const tail = this.peaked.on ? this.tail() : null;
-    const parts: { value: number; sd: number }[] = [];
-    if (fit) parts.push({ value: level - fit.parameters[1]!, sd: Math.hypot(fit.fgSd, 0.6) });
-    if (tail) parts.push({ value: tail.remaining, sd: Math.hypot(1.3 * tail.sd, 0.3) });
-    if (parts.length === 0) return null;
-    let weight = 0;
-    let sum = 0;
-    for (const part of parts) {
-      weight += 1 / part.sd ** 2;
-      sum += part.value / part.sd ** 2;
+    const line = this.line(48);
+    const ending = this.peaked.on && line !== null && -line.slope < 3 && level < this.zoneTop() + 10;
+    const tail = ending ? this.tail() : null;
+    if (!tail) {
+      const fit = this.fit();
+      return fit && { value: level - fit.parameters[1]!, sd: Math.hypot(fit.fgSd, 0.6) };
     }
-    return { value: sum / weight, sd: Math.sqrt(1 / weight) };
+    const prior = this.fgPrior();
+    return held(
+      { value: tail.remaining, sd: Math.hypot(tail.sd, 0.2) },
+      { value: level - prior.mean, sd: Math.hypot(prior.sd, this.track.calibrationSd(level)) },
+    );
   }
 
   remaining(): number | null {
@@ -312,7 +313,6 @@ export class Watch {
     this.maxRates.clear();
     this.maxFittedRate = 0;
     this.fitCache = null;
-    this.lastFit = null;
     this.pendingLevels = true;
     this.sweetened = sweetened;
     for (const one of [this.peaked, this.airlock, this.sluggish, this.stuck, this.terminal, this.rack, this.bottle]) clear(one);
@@ -512,8 +512,8 @@ export class Watch {
     const inside = level !== null && level <= this.zoneTop() && this.peaked.on;
     // The tail is only asked where the fall is slow enough for it to matter.
     const slow = inside && upper48 !== null && upper48 < 1.2;
-    const tail = slow ? this.tail() : null;
-    const most = tail ? tail.remaining + 1.28 * tail.sd : null;
+    const left = slow && this.tail() ? this.remainingNow() : null;
+    const most = left && left.value + 1.28 * left.sd;
 
     const done = most !== null && most < TERMINAL_POINTS && upper48! < 0.9 && this.quietSinceAddition(60, 120);
     const wasDone = this.terminal.on;
@@ -521,12 +521,12 @@ export class Watch {
     if (this.terminal.on && !wasDone) this.plateau = level;
 
     let rackable = this.terminal.on;
-    if (!rackable && inside && this.quietSinceAddition(60, 120) && line24 && -line24.slope < 1.2 && -line24.slope + line24.se < 2) {
-      const left = this.remaining();
+    if (!rackable && inside && this.quietSinceAddition(60, 120) && line24 && -line24.slope < 2.5) {
       const end = this.tail();
-      rackable = (left !== null && left < RACK_POINTS) || (end !== null && end.remaining < RACK_POINTS && end.sd < 1.5);
+      const likely = end ? end.likely : this.remaining();
+      rackable = likely !== null && likely < RACK_POINTS;
     }
-    hold(this.rack, hour, rackable, 3, line24 !== null && -line24.slope - 1.64 * line24.se > 1.5);
+    hold(this.rack, hour, rackable, 2, line24 !== null && -line24.slope - 1.64 * line24.se > 3);
 
     const still =
       most !== null &&
@@ -624,15 +624,23 @@ export class Watch {
       if (line.se <= Math.max(0.5, 0.15 * Math.abs(line.slope))) break;
     }
     if (!chosen) return null;
-    const rate = -chosen.slope;
     const fit = this.started.on && !this.stuck.on ? this.fit() : null;
-    if (!fit) return { value: rate, sd: chosen.se };
-    const tau = this.track.tauAt(this.lookedAt) - this.track.tauAt(this.segment.from);
-    const curved = fit.curve.rate(tau) * this.track.warmthAt(this.lookedAt);
-    const own = chosen.se ** 2 + (0.12 * rate) ** 2;
-    const other = (0.25 * curved + 0.3) ** 2;
-    return { value: (rate / own + curved / other) / (1 / own + 1 / other), sd: Math.sqrt(1 / (1 / own + 1 / other)) };
+    if (!fit) return { value: -chosen.slope, sd: chosen.se };
+    const start = this.track.tauAt(this.segment.from);
+    const pace = (hour: number): number => fit.curve.rate(this.track.tauAt(hour) - start) * this.track.warmthAt(hour);
+    const curved = pace(this.lookedAt);
+    // A line tells the pace of its middle; the curve tells how that has changed since.
+    const change = curved - pace(chosen.middle);
+    const rate = -chosen.slope + change;
+    return held({ value: rate, sd: Math.hypot(chosen.se, 0.12 * rate, 0.5 * change) }, { value: curved, sd: 0.25 * curved + 0.3 });
   }
+}
+
+/** Two independent estimates as one, weighted by their variances. */
+function held(a: { value: number; sd: number }, b: { value: number; sd: number }): { value: number; sd: number } {
+  const wa = 1 / a.sd ** 2;
+  const wb = 1 / b.sd ** 2;
+  return { value: (wa * a.value + wb * b.value) / (wa + wb), sd: Math.sqrt(1 / (wa + wb)) };
 }
 
 function clear(one: Latch): void {
