@@ -14,6 +14,7 @@ import { useMe } from '@/lib/client/me';
 import type { AlertBody } from '@/lib/contracts/alerts';
 import { AlertDetail } from './AlertDetail';
 import { AlertRow } from './AlertRow';
+import { byNeed } from './rows';
 
 type Tab = 'all' | AlertBody['state'];
 
@@ -42,7 +43,6 @@ export function AlertsPage() {
   const open = useAlerts({ state: 'open', limit: 100 });
   const acknowledged = useAlerts({ state: 'acknowledged', limit: 100 });
   const resolved = useAlerts({ state: 'resolved', limit: tab === 'resolved' ? Math.max(STEP, cleared) : cleared });
-  const lists = { open, acknowledged, resolved };
   const error = open.error ?? acknowledged.error ?? resolved.error;
 
   if (me && !mayRead) {
@@ -63,7 +63,8 @@ export function AlertsPage() {
 
   const now = nowMs / 1000;
   const counts = open.counts;
-  const everything = [...open.alerts, ...acknowledged.alerts, ...resolved.alerts];
+  const shown = { open: byNeed(open.alerts), acknowledged: acknowledged.alerts, resolved: resolved.alerts };
+  const everything = [...shown.open, ...shown.acknowledged, ...shown.resolved];
   // On a wide page the worst open alert stands beside the list; on a phone only what was chosen.
   const chosen = everything.find((alert) => alert.id === asked) ?? null;
   const beside = chosen ?? everything[0] ?? null;
@@ -100,7 +101,7 @@ export function AlertsPage() {
           <EmptyState title="Nothing to tell">No call has turned into an alert. When one does, it stands here and goes out by mail.</EmptyState>
         )}
         {GROUPS.filter((group) => tab === 'all' || tab === group.state).map((group) => {
-          const alerts = lists[group.state].alerts ?? [];
+          const alerts = shown[group.state];
           if (alerts.length === 0 && (tab === 'all' || everything.length === 0)) return null;
           return (
             <section key={group.state} aria-label={group.word}>

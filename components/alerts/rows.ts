@@ -1,5 +1,5 @@
 import type { AlertBody } from '@/lib/contracts/alerts';
-import type { StateWord } from '@/lib/core/calls/attention';
+import { STATE_WORDS, type StateWord } from '@/lib/core/calls/attention';
 import { clock, dayName, duration, instantOf, wallTime, when } from '@/components/charts/zone';
 import type { VesselState } from '@/components/vessel/describe';
 
@@ -13,6 +13,12 @@ export function alertState(alert: Pick<AlertBody, 'state' | 'level' | 'call' | '
   if (alert.level === 'act') return { state: 'Now', word: 'Now' };
   if (alert.level === 'check') return { state: 'Check', word: 'Check' };
   return alert.call === 'neck' ? { state: 'Due', word: 'Due' } : { state: 'Ready', word: 'Ready' };
+}
+
+/** What wants a person most first; of equals the one that has waited longest. */
+export function byNeed(alerts: readonly AlertBody[]): AlertBody[] {
+  const rank = (alert: AlertBody) => STATE_WORDS.indexOf(alertState(alert).state);
+  return [...alerts].sort((a, b) => rank(a) - rank(b) || seconds(a.since) - seconds(b.since));
 }
 
 export function alertVessel({ batch, call, kind }: AlertBody): VesselState {

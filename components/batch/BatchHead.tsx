@@ -16,7 +16,7 @@ export interface HeadActions {
 function Facts({ facts, phone }: { facts: readonly Fact[]; phone: boolean }) {
   const shown = phone ? facts.filter((fact) => fact.phone) : facts;
   const names: Record<string, string> = phone ? { 'original gravity': 'pitched at', attenuation: 'fallen', 'strength so far': 'strength' } : {};
-  const order = phone ? ['now', 'attenuation', 'strength so far', 'original gravity'] : shown.map((fact) => fact.name);
+  const order = phone ? ['now', 'last known', 'attenuation', 'strength so far', 'original gravity'] : shown.map((fact) => fact.name);
   const ordered = order.flatMap((name) => shown.find((fact) => fact.name === name) ?? []);
   return (
     <dl className={phone ? 'grid grid-cols-4 border-b' : 'mt-[14px] flex flex-wrap border-t'}>

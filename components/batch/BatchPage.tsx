@@ -15,7 +15,7 @@ import { vesselOf } from '@/components/vessel/describe';
 import { useBatch, useJudgement, useSeries, useVerdictChanges } from '@/lib/client/batches';
 import { useEntries } from '@/lib/client/entries';
 import { useMe } from '@/lib/client/me';
-import type { BatchBody } from '@/lib/contracts/batches';
+import type { BatchBody, SeriesBody } from '@/lib/contracts/batches';
 import { BatchHead, PhoneFacts, PhoneHead } from './BatchHead';
 import { Calls } from './Calls';
 import { callRows, type CallRow } from './calls';
@@ -23,7 +23,7 @@ import { Decision, type DoneAct } from './Decision';
 import { EntryForm } from './EntryForm';
 import type { EntryDraft, EntryKind } from './entry-form';
 import { Evidence } from './Evidence';
-import { factsOf } from './facts';
+import { factsOf, type LastReading } from './facts';
 import { litres } from './figures';
 import { Log } from './Log';
 import { logRows } from './log';
@@ -109,7 +109,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
 
   const rows = useMemo(() => (judged ? callRows(batch, judged, now, timeZone) : []), [batch, judged, now, timeZone]);
   const log = useMemo(() => logRows(entries ?? [], changes ?? []), [entries, changes]);
-  const facts = factsOf(shown, now, timeZone);
+  const facts = factsOf(shown, lastReading(series.series), now, timeZone);
   const racked = judged?.stage === 'terminal' && (entries ?? []).some((entry) => entry.kind === 'rack');
   const vessel = vesselOf(shown, racked);
 
@@ -165,6 +165,11 @@ function Loaded({ batch }: { batch: BatchBody }) {
       )}
     </>
   );
+}
+
+function lastReading(series: SeriesBody | undefined): LastReading | null {
+  const index = series?.gravity.findLastIndex((value) => value !== null) ?? -1;
+  return series && index >= 0 ? { at: series.at[index]!, gravity: series.gravity[index]! } : null;
 }
 
 /** `Thu 14:00` for what is due, `since Tue 07:30` for what is so. */

@@ -41,20 +41,27 @@ function TakeBack({ batchId, entryId }: { batchId: string; entryId: string }) {
 
 function Row({ row, batchId, now, timeZone }: { row: LogRow; batchId: string; now: number; timeZone: string }) {
   return (
-    <li className="arrives grid grid-cols-[1fr_auto] items-baseline gap-x-3 gap-y-1 border-b border-rule py-[7px] strip:grid-cols-[98px_22px_minmax(0,1fr)_auto_52px_92px] strip:gap-x-2">
-      <span className="type-label text-[0.71875rem] text-ink2 max-strip:col-start-1">{logTime(row.at, now, timeZone)}</span>
-      <span className="max-strip:col-start-2 max-strip:row-start-1 strip:translate-y-[3px]">
+    <li className="arrives grid grid-cols-[22px_minmax(0,1fr)_auto] items-baseline gap-x-2 gap-y-0.5 border-b border-rule py-[7px] strip:grid-cols-[98px_22px_minmax(0,1fr)_auto_52px_92px]">
+      <span className="row-start-1 translate-y-[3px] strip:col-start-2">
         <LogIcon kind={row.kind} />
         <span className="heard-only">{LOG_KIND_WORDS[row.kind]}</span>
       </span>
-      <p className="type-body min-w-0 break-words max-strip:col-span-2">
+      <span className="type-label row-start-1 text-[0.71875rem] text-ink2 strip:col-start-1">
+        {logTime(row.at, now, timeZone)}
+        <span className="strip:hidden">, {row.who}</span>
+      </span>
+      <p className="type-body min-w-0 break-words max-strip:col-start-2 max-strip:row-start-2 strip:col-start-3">
         {row.text !== '' && <Sentence>{row.text}</Sentence>}
         {row.text !== '' && row.own !== null && ' '}
-        {row.own !== null && <span className="whitespace-pre-line">{<Sentence>{row.own}</Sentence>}</span>}
+        {row.own !== null && (
+          <span className="whitespace-pre-line">
+            <Sentence>{row.own}</Sentence>
+          </span>
+        )}
       </p>
-      <span className="max-strip:col-start-2 max-strip:row-start-3 max-strip:text-right">{row.mine && <TakeBack batchId={batchId} entryId={row.id} />}</span>
-      <span className="font-mono text-[0.84375rem] font-semibold max-strip:col-start-1 max-strip:row-start-4 max-strip:empty:hidden strip:text-right">{row.figure}</span>
-      <span className="type-label truncate text-[0.71875rem] text-ink2 max-strip:col-start-1 max-strip:row-start-3 strip:text-right" title={row.who}>
+      <span className="justify-self-end max-strip:col-start-3 max-strip:row-start-2 strip:col-start-4">{row.mine && <TakeBack batchId={batchId} entryId={row.id} />}</span>
+      <span className="row-start-1 text-right font-mono text-[0.84375rem] font-semibold max-strip:col-start-3 strip:col-start-5">{row.figure}</span>
+      <span className="type-label truncate text-[0.71875rem] text-ink2 max-strip:hidden strip:col-start-6 strip:text-right" title={row.who}>
         {row.who}
       </span>
     </li>

@@ -71,6 +71,7 @@ function linesOf(call: CallBody, now: number, timeZone: string, ruler: RulerPart
 
 /** The bottle's Stop answers a question nobody may have asked yet: what wants a person stands before it, save a bottle that works again. */
 function rank(row: CallRow, judged: AssessmentBody): number {
+  if (row.word === 'Not known') return STATE_WORDS.indexOf('Leave be') - 0.5;
   const asked = row.name === 'bottle' && row.state === 'Stop' && judged.calls.bottle.kind !== 'refermentation';
   return asked ? STATE_WORDS.indexOf('Ready') + 0.5 : STATE_WORDS.indexOf(row.state);
 }
@@ -100,4 +101,4 @@ export function callRows(batch: Pick<BatchBody, 'neck' | 'alerts' | 'original_gr
 }
 
 /** Loud calls are shown with their evidence open. */
-export const isLoud = (row: Pick<CallRow, 'state'>): boolean => !['Leave be', 'Done', 'Silent'].includes(row.state);
+export const isLoud = (row: Pick<CallRow, 'state' | 'word'>): boolean => row.state !== 'Leave be' && row.state !== 'Done' && row.word !== 'Not known';

@@ -14,8 +14,21 @@ export interface Fact {
 
 const share = (part: number, whole: number) => Math.round((part / whole) * 100);
 
+/** What is last known of the gravity: the judged one, else the last reading with its time. */
+function gravityFact(batch: BatchBody, last: LastReading | null, now: number, timeZone: string): Pick<Fact, 'figure' | 'more'> {
+  const judged = batch.assessment?.gravity;
+  if (judged) return { figure: gravityText(judged.value), more: doubt(judged) };
+  return last ? { figure: gravityText(last.gravity), more: `at ${when(last.at, now, timeZone)}` } : { figure: 'not known', more: null };
+}
+
+export interface LastReading {
+  /** Seconds since 1970. */
+  at: number;
+  gravity: number;
+}
+
 /** What a reader wants at once, in the order of the fall. `now` in seconds since 1970. */
-export function factsOf(batch: BatchBody, now: number, timeZone: string): Fact[] {
+export function factsOf(batch: BatchBody, last: LastReading | null, now: number, timeZone: string): Fact[] {
   const { assessment: judged, original_gravity: og } = batch;
   const seconds = (iso: string) => Date.parse(iso) / 1000;
   const day = dayOf(batch.pitched_at, now);
@@ -27,7 +40,7 @@ export function factsOf(batch: BatchBody, now: number, timeZone: string): Fact[]
   return [
     { name: 'pitched', figure: batch.pitched_at ? dayName(seconds(batch.pitched_at), timeZone) : 'not yet', more: day === null ? null : `day ${day}`, phone: false },
     { name: 'original gravity', figure: og === null ? 'not told' : gravityText(og), more: null, phone: true },
-    { name: 'now', figure: judged?.gravity ? gravityText(judged.gravity.value) : 'not known', more: judged?.gravity ? doubt(judged.gravity) : null, phone: true },
+    { name: judged?.gravity ? 'now' : 'last known', ...gravityFact(batch, last, now, timeZone), phone: true },
     { name: 'bed', figure: bed ? gravityText(bed.value) : 'not known', more: bed && doubt(bed), phone: false },
     { name: 'attenuation', figure: fallen === null ? '–' : `${Math.round(fallen)} %`, more: attenuable === null ? null : `of ${attenuable}`, phone: true },
     { name: 'strength so far', figure: judged?.abv_percent ? percent(judged.abv_percent.value) : '–', more: judged?.expected_abv_percent ? `of ${judged.expected_abv_percent.value.toFixed(1)}` : null, phone: true },

@@ -103,7 +103,9 @@ export const airlockLine: Mark = (view) => {
   setText(view, palette.ink2);
   context.textAlign = 'right';
   const words = `airlock holds under ${picture.airlockHolds.toFixed(2)}`;
-  underText(view, words, right - 6, y - 9);
+  // On a phone the figure of now stands over the line, so that the words go under it where there is room.
+  const below = layout.style === 'phone' && view.y(layout.gas, 0) - y > 12;
+  underText(view, words, right - 6, below ? y + 9 : y - 9);
 };
 
 /** Text on a patch of paper, so that rules do not run through it. */

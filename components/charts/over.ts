@@ -1,6 +1,6 @@
 import { placePosts, keepClear, type Label } from './place';
 import { gravityNow, hasStopped, knownUntil, valueAt, type Picture } from './picture';
-import { clock } from './zone';
+import { clock, when } from './zone';
 import { underText } from './ground';
 import { clipToPlot, crisp, line, setText, type Mark, type View } from './view';
 
@@ -140,8 +140,10 @@ export const likelyEnd: Mark = (view) => {
     setText(view, palette.ink, 600);
     const width = context.measureText(words).width;
     const at = Math.min(Math.max(to, view.x(picture.now) + width + 24), right - 6);
-    const reach = valueAt(picture.curve, picture.likelyEnd.lo)?.hi ?? picture.bed?.hi ?? layout.gravity.min;
-    if (at - width > view.x(picture.now) + 8) underText(view, words, at, Math.max(view.top + 30, view.y(layout.gravity, reach) - 20));
+    // Over the highest part of the band that the words stand on.
+    const stood = picture.curve.filter((point) => view.x(point.at) >= at - width - 6 && view.x(point.at) <= at + 6);
+    const reach = Math.max(...stood.map((point) => point.hi), picture.bed?.hi ?? layout.gravity.min);
+    if (at - width > view.x(picture.now) + 8) context.fillText(words, at, Math.max(view.top + 30, view.y(layout.gravity, reach) - 12));
     return;
   }
   if (layout.height < 46) return;
@@ -211,7 +213,7 @@ export const nowLine = (timeZone: string): Mark => (view) => {
     }
   }
   dot(view);
-  figuresNow(view, x);
+  figuresNow(view, x, timeZone);
 };
 
 function dot(view: View): void {
@@ -251,9 +253,11 @@ export function temperatureWords(picture: Pick<Picture, 'readings' | 'range'>, l
   return figure;
 }
 
-function figuresNow(view: View, x: number): void {
+function figuresNow(view: View, x: number, timeZone: string): void {
   const { context, palette, layout, picture } = view;
-  const words = temperatureWords(picture, layout.style === 'page');
+  const figure = temperatureWords(picture, layout.style === 'page');
+  // A figure that is not of now gets its time.
+  const words = figure && picture.silentAt !== null && layout.style !== 'lane' ? `${figure} at ${when(picture.silentAt, picture.now, timeZone)}` : figure;
   context.textAlign = 'left';
   const put = (text: string, y: number) => {
     const width = context.measureText(text).width;
@@ -268,7 +272,7 @@ function figuresNow(view: View, x: number): void {
     put(words, lane ? view.bottom - 13 : Math.min(view.y(layout.temperature, value), view.top + layout.temperature.top + layout.temperature.height - 4));
   }
   const gas = picture.gas.findLast((bin) => bin.at <= picture.now);
-  if (layout.gas && gas) {
+  if (layout.gas && gas && picture.silentAt === null) {
     setText(view, palette.ink, 600);
     put(gas.value.toFixed(2), Math.min(view.y(layout.gas, gas.value), view.y(layout.gas, 0) - 7));
   }

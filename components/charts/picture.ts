@@ -103,7 +103,8 @@ export function wholeSpan(picture: Picture, pitchedAt: number | null): Span {
   const starts = [pitchedAt, picture.readings.at[0], picture.curve[0]?.at, picture.posts[0]?.at, picture.rings[0]?.at].filter((value): value is number => typeof value === 'number');
   const start = starts.length > 0 ? Math.min(...starts, picture.now) : picture.now - DAY;
   const past = Math.max(picture.now - start, DAY);
-  const wanted = picture.likelyEnd ? picture.likelyEnd.hi - picture.now + DAY : 3 * DAY;
+  const foreseen = Math.min((picture.curve.at(-1)?.at ?? 0) - picture.now, 6 * DAY);
+  const wanted = picture.likelyEnd ? Math.max(picture.likelyEnd.hi - picture.now + DAY, foreseen) : foreseen;
   const ahead = Math.max(3 * DAY, Math.min(wanted, past, 21 * DAY));
   return { from: start - (past + ahead) * 0.025, to: picture.now + ahead };
 }

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { alertFate, alertMeta, alertState, lookAgainTimes, toldLines } from '@/components/alerts/rows';
+import { alertFate, alertMeta, alertState, byNeed, lookAgainTimes, toldLines } from '@/components/alerts/rows';
 import type { AlertBody } from '@/lib/contracts/alerts';
 import { call, hours, NOW } from './fixtures';
 
@@ -49,6 +49,13 @@ describe('an alert in the list', () => {
     const taken = alert({ state: 'acknowledged', acknowledged_by: { id: ID, name: 'Ines' }, look_again_at: hours(-1) });
     expect(alertFate(taken, NOW, 'UTC').map((line) => line.text)).toEqual(['Ines has it', 'was to look again 13:32']);
     expect(alertFate(alert({ state: 'resolved', resolved_at: hours(-1) }), NOW, 'UTC')[0]!.text).toBe('passed by itself, 13:32');
+  });
+});
+
+describe('open alerts', () => {
+  it('stand in the order of need, the longest waiting first among equals', () => {
+    const list = byNeed([alert({ call: 'rack', kind: null, level: 'know' }), alert({ kind: 'new' }), alert({ kind: 'old', since: hours(-90) }), alert({ level: 'act', call: 'neck' })]);
+    expect(list.map((item) => item.kind ?? item.call)).toEqual(['stuck', 'old', 'new', 'rack']);
   });
 });
 

@@ -7,7 +7,7 @@ import { dayOf, placeWords } from '@/components/batch/words';
 import { picture, straight } from '../charts/fixtures';
 import { batch, entry, hours, judged, NOW } from './fixtures';
 
-const fact = (over: Parameters<typeof batch>[0], name: string) => factsOf(batch(over), NOW, 'UTC').find((item) => item.name === name)!;
+const fact = (over: Parameters<typeof batch>[0], name: string) => factsOf(batch(over), null, NOW, 'UTC').find((item) => item.name === name)!;
 
 describe('the line of facts', () => {
   it('says how far the fall is on its way', () => {
@@ -19,7 +19,12 @@ describe('the line of facts', () => {
 
   it('says what is not known instead of leaving a guess', () => {
     const none = { assessment: null, original_gravity: null, sensor: null, pitched_at: null };
-    expect(factsOf(batch(none), NOW, 'UTC').map((item) => item.figure)).toEqual(['not yet', 'not told', 'not known', 'not known', '–', '–', 'not known', 'none']);
+    expect(factsOf(batch(none), null, NOW, 'UTC').map((item) => item.figure)).toEqual(['not yet', 'not told', 'not known', 'not known', '–', '–', 'not known', 'none']);
+  });
+
+  it('gives the last reading its time where nothing is known of now', () => {
+    const silent = batch({ assessment: judged({}, { gravity: null }) });
+    expect(factsOf(silent, { at: NOW - 15 * 3600, gravity: 1.0312 }, NOW, 'UTC')[2]).toMatchObject({ name: 'last known', figure: '1.031', more: 'at Wed 23:32' });
   });
 
   it('gives the likely end as days, until it is reached or has passed', () => {
@@ -100,6 +105,10 @@ describe('the line under the cursor', () => {
 
   it('gives the forecast with its interval past now', () => {
     expect(cursorLine(shown, NOW + 24 * 3600, 'UTC').figures).toBe('1.024, 8 in 10 1.022–1.026');
+  });
+
+  it('calls what lies after a silent sensor’s last word a forecast, now included', () => {
+    expect(cursorLine({ ...shown, silentAt: NOW - 20 * 3600 }, null, 'UTC').figures).toBe('1.030, 8 in 10 1.028–1.032');
   });
 
   it('stands at now while nobody points', () => {
