@@ -1,10 +1,4 @@
-import { fileURLToPath } from 'node:url';
-
 /** @type {import('next').NextConfig} */
-const config = {
-  distDir: '.next-empty',
-  poweredByHeader: false,
-  turbopack: { root: fileURLToPath(new URL('../../..', import.meta.url)) },
-};
+const config = { distDir: '.next-empty', poweredByHeader: false };
 
 export default config;
