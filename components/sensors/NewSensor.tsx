@@ -104,7 +104,7 @@ export function NewSensor({ doors }: { doors: Doors }) {
   return (
     <>
       <PageHead title="Add a sensor" />
-      <div className="wide:grid wide:min-h-[calc(100dvh-110px)] wide:grid-cols-[424px_minmax(0,1fr)]">
+      <div className="wide:grid wide:min-h-[calc(100dvh-101px)] wide:grid-cols-[424px_minmax(0,1fr)]">
         <form noValidate onSubmit={(event) => void submit(event)} className="flex flex-col gap-4 bg-desk px-(--margin) py-5 wide:border-r-[1.5px] wide:border-ink">
           {failed && <FormError>{failed}</FormError>}
           <Field label="name" name="name" autoFocus maxLength={60} autoComplete="off" hint="What is written on it, such as Float 05" error={errors.name?.[0]} />

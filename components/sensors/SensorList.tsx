@@ -73,6 +73,14 @@ function Row({ sensor, now, timeZone }: { sensor: SensorBody; now: number; timeZ
   );
 }
 
+const URGENT = ['Silent', 'Check'];
+
+/** What wants a look first, then by name, figures in it as numbers. */
+function inOrder(sensors: readonly SensorBody[], now: number): SensorBody[] {
+  const rank = (sensor: SensorBody) => (URGENT.includes(sensorState(sensor, now).state) ? URGENT.indexOf(sensorState(sensor, now).state) : URGENT.length);
+  return [...sensors].sort((a, b) => rank(a) - rank(b) || a.name.localeCompare(b.name, 'en', { numeric: true }));
+}
+
 /** All sensors of the cellar: where they are, when they were heard, how they are. */
 export function SensorList() {
   const { me, may } = useMe();
@@ -119,7 +127,7 @@ export function SensorList() {
             <span className="text-right">refused</span>
           </div>
           <ul>
-            {sensors.map((sensor) => (
+            {inOrder(sensors, now).map((sensor) => (
               <Row key={sensor.id} sensor={sensor} now={now} timeZone={timeZone} />
             ))}
           </ul>

@@ -38,7 +38,7 @@ const ROLE_WORDS: Record<Role, string> = {
 
 function Members() {
   const { members, loading, error } = useMembers();
-  if (loading) return <Haze height={48} label="Loading the people" className="m-4" />;
+  if (loading) return <Haze height={48} label="Loading the people" className="mx-(--margin) my-3" />;
   if (!members) return <p className="type-body px-(--margin) py-3 text-ink2">The people did not load. {error?.message}</p>;
   return (
     <ul>
@@ -71,7 +71,7 @@ function SignIns({ now, timeZone }: { now: number; timeZone: string }) {
     }
   };
 
-  if (loading) return <Haze height={48} label="Loading the sign-ins" className="m-4" />;
+  if (loading) return <Haze height={48} label="Loading the sign-ins" className="mx-(--margin) my-3" />;
   if (!signIns) return <p className="type-body px-(--margin) py-3 text-ink2">The sign-ins did not load. {error?.message}</p>;
   return (
     <>
@@ -131,8 +131,8 @@ export function Settings() {
   return (
     <>
       <PageHead title="Settings" />
-      {loading && <Haze height={96} label="Loading the settings" className="m-4" />}
-      <div className="wide:grid wide:min-h-[calc(100dvh-110px)] wide:grid-cols-[424px_minmax(0,1fr)]">
+      {loading && <Haze height={96} label="Loading the settings" className="mx-(--margin) my-3" />}
+      <div className="wide:grid wide:min-h-[calc(100dvh-101px)] wide:grid-cols-[424px_minmax(0,1fr)]">
         <div className="bg-desk wide:border-r-[1.5px] wide:border-ink">
           {me && (
             <section aria-label="You">

@@ -64,7 +64,7 @@ export function Lane({ view, span, now, timeZone, staleAt, mayTake, layout }: La
   const { lane, attention } = view;
   const { group } = attention;
   const low = group === 'leave';
-  const figures = laneFigures(lane, staleAt, timeZone);
+  const figures = laneFigures(lane, staleAt, now, timeZone);
   const middle = layout === 'middle';
   return (
     <li
@@ -99,7 +99,7 @@ export function PhoneLane({ view, span, now, timeZone, staleAt, mayTake }: LaneP
   const { lane, attention, headline, reason } = view;
   const { group } = attention;
   const low = group === 'leave';
-  const figures = laneFigures(lane, staleAt, timeZone);
+  const figures = laneFigures(lane, staleAt, now, timeZone);
   const height = low ? 62 : 78;
   return (
     <li className={`relative border-b ${paper(view)}`}>

@@ -112,7 +112,7 @@ export function Shelf() {
                 {lanes.map((view) => {
                   const props = { view, span, now, timeZone, staleAt, mayTake };
                   return (
-                    <LaneGuard key={view.lane.id} name={view.lane.name} gravity={laneFigures(view.lane, staleAt, timeZone).gravity}>
+                    <LaneGuard key={view.lane.id} name={view.lane.name} gravity={laneFigures(view.lane, staleAt, now, timeZone).gravity}>
                       {phone ? <PhoneLane {...props} /> : <Lane {...props} layout={layout} />}
                     </LaneGuard>
                   );

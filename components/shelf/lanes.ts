@@ -147,13 +147,29 @@ export interface LaneFigures {
   under: string;
 }
 
+interface Known {
+  gravity: number;
+  /** s since 1970. */
+  at: number;
+  byHand: boolean;
+}
+
+/** The newest reading of either kind, where no judgement gives the gravity now. */
+function lastKnown({ series, entries }: LaneBody): Known | null {
+  const index = series.gravity.findLastIndex((value) => value !== null);
+  const known = entries.flatMap((entry): Known[] => (entry.kind === 'reading' && entry.gravity !== null ? [{ gravity: entry.gravity, at: Date.parse(entry.at) / 1000, byHand: true }] : []));
+  if (index >= 0) known.push({ gravity: series.gravity[index]!, at: series.at[index]!, byHand: false });
+  return known.sort((a, b) => b.at - a.at)[0] ?? null;
+}
+
 /** The gravity now, as far as it is known. `staleAt` (s): when the page was last in touch, if it is not. */
-export function laneFigures(lane: LaneBody, staleAt: number | null, timeZone: string): LaneFigures {
-  const hand = lane.entries.filter((entry) => entry.gravity !== null && entry.kind === 'reading').sort((a, b) => Date.parse(b.at) - Date.parse(a.at))[0];
-  const value = lane.assessment?.gravity?.value ?? hand?.gravity ?? lane.original_gravity;
+export function laneFigures(lane: LaneBody, staleAt: number | null, now: number, timeZone: string): LaneFigures {
+  const judged = lane.assessment?.gravity?.value;
   const abv = lane.assessment?.abv_percent?.value;
-  return {
-    gravity: typeof value === 'number' ? value.toFixed(3) : '–',
-    under: staleAt !== null ? `at ${clock(staleAt, timeZone)}` : typeof abv === 'number' ? `${Math.max(0, abv).toFixed(1)} % so far` : lane.assessment?.gravity ? '' : hand ? 'by hand' : typeof value === 'number' ? 'at pitch' : '',
-  };
+  if (judged !== undefined) {
+    return { gravity: judged.toFixed(3), under: staleAt !== null ? `at ${clock(staleAt, timeZone)}` : typeof abv === 'number' ? `${Math.max(0, abv).toFixed(1)} % so far` : '' };
+  }
+  const known = lastKnown(lane);
+  if (known) return { gravity: known.gravity.toFixed(3), under: `${known.byHand ? 'by hand' : 'at'} ${when(known.at, now, timeZone)}` };
+  return lane.original_gravity === null ? { gravity: '–', under: '' } : { gravity: lane.original_gravity.toFixed(3), under: 'at pitch' };
 }

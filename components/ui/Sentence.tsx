@@ -7,7 +7,7 @@ export function Sentence({ children, strong = false }: { children: string; stron
       {splitFigures(children).map((piece, index) =>
         piece.figure ? (
           <span key={index} className={strong ? 'fig-strong' : 'fig'}>
-            {piece.text}
+            {piece.text.replace(/^-/, '−')}
           </span>
         ) : (
           piece.text

@@ -68,6 +68,10 @@ describe('a lane', () => {
     expect(attentionOf(batch({}, { stage: 'lag' })).call).toBe('started');
   });
 
+  it('that foams into its tube says that the tube stays', () => {
+    expect(attentionOf(batch({ neck: { verdict: 'hold' } }, { stage: 'peak', neck: 'blow_off' }))).toEqual({ state: 'Leave be', group: 'leave', call: 'neck', at: null });
+  });
+
   it('lets the call that wants a person most speak', () => {
     const input = batch({ rack: { verdict: 'yes' }, sensor: { verdict: 'yes', kind: 'silent', since: NOW - HOUR }, stalled: { verdict: 'yes', kind: 'stuck', since: NOW - 5 * HOUR } });
     expect(attentionOf(input)).toEqual({ state: 'Check', group: 'now', call: 'stalled', at: NOW - 5 * HOUR });

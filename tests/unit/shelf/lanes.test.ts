@@ -52,19 +52,21 @@ describe('a lane', () => {
 
   it('gives old figures their time', () => {
     const lane = aLane({});
-    expect(laneFigures(lane, null, 'UTC')).toEqual({ gravity: '1.041', under: '3.5 % so far' });
-    expect(laneFigures(lane, Date.parse('2026-10-15T14:10Z') / 1000, 'UTC').under).toBe('at 14:10');
+    expect(laneFigures(lane, null, NOW, 'UTC')).toEqual({ gravity: '1.041', under: '3.5 % so far' });
+    expect(laneFigures(lane, Date.parse('2026-10-15T14:10Z') / 1000, NOW, 'UTC').under).toBe('at 14:10');
   });
 
-  it('without a judgement shows the newest hand reading, then the original gravity, then a dash', () => {
+  it('without a judgement shows the newest reading by hand or sensor, then the original gravity, then a dash', () => {
     const bare = { assessment: null, entries: [] } as const;
-    expect(laneFigures(aLane({ ...bare, original_gravity: 1.068 }), null, 'UTC')).toEqual({ gravity: '1.068', under: 'at pitch' });
-    expect(laneFigures(aLane({ ...bare, original_gravity: null }), null, 'UTC').gravity).toBe('–');
+    expect(laneFigures(aLane({ ...bare, original_gravity: 1.068 }), null, NOW, 'UTC')).toEqual({ gravity: '1.068', under: 'at pitch' });
+    expect(laneFigures(aLane({ ...bare, original_gravity: null }), null, NOW, 'UTC').gravity).toBe('–');
     const read = [
       { kind: 'reading', at: at('2026-10-12T09:00Z'), gravity: 1.05 },
       { kind: 'reading', at: at('2026-10-14T09:00Z'), gravity: 1.044 },
     ] as const;
-    expect(laneFigures(aLane({ assessment: null, entries: read }), null, 'UTC')).toEqual({ gravity: '1.044', under: 'by hand' });
+    expect(laneFigures(aLane({ assessment: null, entries: read }), null, NOW, 'UTC')).toEqual({ gravity: '1.044', under: 'by hand Wed 09:00' });
+    const heard = { from: at('2026-10-01T00:00Z'), to: at('2026-10-20T00:00Z'), count: 2, at: [NOW - 7200, NOW - 3600], gravity: [1.043, null], temperature: [18, 18] };
+    expect(laneFigures(aLane({ assessment: null, entries: read, series: heard }), null, NOW, 'UTC')).toEqual({ gravity: '1.043', under: 'at 12:32' });
   });
 });
 
