@@ -112,7 +112,8 @@ export function robustLine(t: Float64Array, g: Float64Array, from: number, to: n
     if (!(det > 1e-9 * sw)) return null;
     const slope = (sw * stg - st * sg) / det;
     const shift = (sg - slope * st) / sw;
-    const still = Math.abs(slope - b) < 1e-5 && Math.abs(shift) < 1e-4;
+    // Closer than a hundredth of the least standard error.
+    const still = Math.abs(slope - b) < 2e-5 && Math.abs(shift) < 2e-3;
     b = slope;
     a += shift;
     if (still) break;

@@ -5,6 +5,8 @@ export interface Tail {
   /** Points still to fall. */
   remaining: number;
   sd: number;
+  /** The likely figure, points: the middle where `remaining` is the mean of a lopsided spread. */
+  likely: number;
   /** Pace of the slowing, per day. */
   pace: number;
 }
@@ -103,6 +105,7 @@ export function fitTail(t: Float64Array, g: Float64Array, from: number, to: numb
   let mean = 0;
   let second = 0;
   let pace = 0;
+  let logs = 0;
   let best = Number.POSITIVE_INFINITY;
   const found: { b: number; v: number; cost: number; lambda: number }[] = [];
   for (const multiple of PACES) {
@@ -126,10 +129,11 @@ export function fitTail(t: Float64Array, g: Float64Array, from: number, to: numb
     mean += w * b;
     second += w * (b * b + v);
     pace += w * lambda;
+    logs += w * Math.log(Math.max(0.05, b));
   }
   if (!(total > 0)) return null;
   mean /= total;
-  return { remaining: mean, sd: Math.sqrt(Math.max(0, second / total - mean * mean)), pace: pace / total };
+  return { remaining: mean, sd: Math.sqrt(Math.max(0, second / total - mean * mean)), likely: Math.exp(logs / total), pace: pace / total };
 }
 
 function setBasis(t: Float64Array, from: number, n: number, now: number, lambda: number): void {

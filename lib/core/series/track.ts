@@ -2,7 +2,7 @@ import type { BatchEvent, BatchSetup, Instant, Reading } from '../types';
 import { appendBin, binFrom, newBins, type Bins } from './bins';
 import { robustLine, type Line } from './line';
 import { fitTail, type Tail } from './tail';
-import { medianInPlace } from './order';
+import { medianInPlace, select } from './order';
 
 export const HOUR_MS = 3_600_000;
 const USUAL_C = 20;
@@ -54,6 +54,7 @@ export class Track {
   spacing = 1;
   private readings: Reading[] = [];
   private taken = 0;
+  private sinceMeasured = 0;
 
   constructor(
     readonly setup: BatchSetup,
@@ -82,8 +83,9 @@ export class Track {
       bins.g[i] = bins.raw[i]! - this.pendingShift;
       this.age(i);
       this.taken = to;
+      this.sinceMeasured += to - from;
     }
-    this.measureSpacing();
+    if (this.sinceMeasured >= 12) this.measureSpacing();
   }
 
   private age(i: number): void {
@@ -106,6 +108,7 @@ export class Track {
 
   /** Spacing of the last 60 readings; it decides how long a silence is long. */
   private measureSpacing(): void {
+    this.sinceMeasured = 0;
     const n = this.taken;
     if (n < 3) return;
     const from = Math.max(1, n - 60);
@@ -132,7 +135,7 @@ export class Track {
   /** What is still to fall after `to`, from the record since `from`; null when less than three quarters of it has data. */
   tail(from: number, to: number): Tail | null {
     const kept = this.gather(from, to, 0.75);
-    return kept < 10 ? null : fitTail(lineT, lineG, 0, kept, to, to / 24);
+    return kept < 10 ? null : fitTail(lineT, lineG, 0, kept > 60 ? thirds(kept) : kept, to, to / 24);
   }
 
   /** Copies the sound bins of [from, to) side by side; their number, or 0 when they cover too little. */
@@ -343,10 +346,10 @@ export class Track {
       }
     }
     if (n < 6) return null;
-    const values = scratch.slice(0, n).sort();
     const kept = Math.max(1, Math.floor(0.85 * n));
+    select(scratch, 0, n, kept - 1);
     let sum = 0;
-    for (let i = 0; i < kept; i += 1) sum += values[i]!;
+    for (let i = 0; i < kept; i += 1) sum += scratch[i]!;
     return sum / kept;
   }
 
@@ -365,6 +368,19 @@ export class Track {
     const { bins } = this;
     for (let i = binFrom(bins, Math.ceil(fromHour)); i < bins.n && bins.hour[i]! < toHour; i += 1) bins.masked[i] = 1;
   }
+}
+
+/** Medians of three neighbours each in place of the gathered bins; how many there are. */
+function thirds(n: number): number {
+  const m = Math.floor(n / 3);
+  // The newest bins are kept whole: what is left over falls off at the old end.
+  const skip = n - 3 * m;
+  for (let i = 0; i < m; i += 1) {
+    const j = skip + 3 * i;
+    lineT[i] = (lineT[j]! + lineT[j + 1]! + lineT[j + 2]!) / 3;
+    lineG[i] = middleOf(lineG[j]!, lineG[j + 1]!, lineG[j + 2]!);
+  }
+  return m;
 }
 
 function middleOf(a: number, b: number, c: number): number {

@@ -13,6 +13,8 @@ import { hold, latch, type Latch } from './latch';
 
 /** Hours between two looks. The grid is anchored at the pitch, so that shifting all times shifts all answers. */
 export const LOOK_H = 3;
+/** Hours between two views of the tail, which hardly changes from look to look. */
+const TAIL_H = 6;
 /** Points that may still come, nine times in ten, when a batch is called finished, and when it may be bottled. */
 export const TERMINAL_POINTS = 1.7;
 export const BOTTLE_POINTS = 1.0;
@@ -73,6 +75,7 @@ export class Watch {
   plateau: number | null = null;
   private noise = 0.5;
   private noiseHistory: number[] = [];
+  private usualNoise: number | null = null;
   private frozenLooks = 0;
   private events: BatchEvent[];
   private eventsTaken = 0;
@@ -80,7 +83,8 @@ export class Watch {
   private pendingLevels = false;
   private lines = new Map<number, Line | null>();
   private fitCache: { key: number; fit: CurveFit | null } | null = null;
-  private tailCache: Tail | null | undefined;
+  private tailCache: { at: number; tail: Tail | null } | null = null;
+  private priorCache: { segment: Segment; prior: Normal } | null = null;
 
   constructor(
     readonly setup: BatchSetup,
@@ -135,7 +139,11 @@ export class Watch {
 
   fgPrior(): Normal {
     const { segment } = this;
-    return finalGravityPrior(this.setup, segment.effectiveOg, segment.ogSd, segment.fruit);
+    // The segment is replaced whenever it changes, so it is its own key.
+    if (this.priorCache?.segment !== segment) {
+      this.priorCache = { segment, prior: finalGravityPrior(this.setup, segment.effectiveOg, segment.ogSd, segment.fruit) };
+    }
+    return this.priorCache.prior;
   }
 
   /** Highest gravity at which the batch may be done, points. */
@@ -164,13 +172,13 @@ export class Watch {
 
   /** What is still to come by the end of the record alone: a quarter of the age, at least 3 and at most 10 days of it. */
   tail(): Tail | null {
-    if (this.tailCache === undefined) {
-      const now = this.lookedAt;
+    const now = Math.floor(this.lookedAt / TAIL_H + 1e-9) * TAIL_H;
+    if (this.tailCache?.at !== now) {
       const window = Math.max(72, Math.min(240, 0.25 * now));
       const since = Math.max(now - window, this.segment.restarted ? this.segment.from + 24 : 0);
-      this.tailCache = now - since < 66 ? null : this.track.tail(since, now);
+      this.tailCache = { at: now, tail: now - since < 66 ? null : this.track.tail(since, now) };
     }
-    return this.tailCache;
+    return this.tailCache.tail;
   }
 
   /**
@@ -230,7 +238,6 @@ export class Watch {
   advance(hour: number, readings: Reading[]): void {
     this.lookedAt = hour;
     this.lines.clear();
-    this.tailCache = undefined;
     this.track.extend(readings, this.track.instantOf(hour));
     while (this.eventsTaken < this.events.length && this.track.hourOf(this.events[this.eventsTaken]!.at) <= hour) {
       this.take(this.events[this.eventsTaken]!);
@@ -313,6 +320,7 @@ export class Watch {
     this.maxRates.clear();
     this.maxFittedRate = 0;
     this.fitCache = null;
+    this.tailCache = null;
     this.pendingLevels = true;
     this.sweetened = sweetened;
     for (const one of [this.peaked, this.airlock, this.sluggish, this.stuck, this.terminal, this.rack, this.bottle]) clear(one);
@@ -336,7 +344,12 @@ export class Watch {
     this.pendingRackings = this.pendingRackings.filter((hour) => {
       if (this.lookedAt < hour + 7.5) return true;
       const step = track.stepAt(hour);
-      if (step !== null && Math.abs(step) > 0.4 && Math.abs(step) < 15) track.shift(hour, step, 'racking');
+      if (step !== null && Math.abs(step) > 0.4 && Math.abs(step) < 15) {
+        track.shift(hour, step, 'racking');
+        this.lines.clear();
+        this.fitCache = null;
+        this.tailCache = null;
+      }
       return false;
     });
     if (this.pendingLevels && this.lookedAt >= this.segment.from + 7) {
@@ -358,6 +371,7 @@ export class Watch {
       else track.shift(step.hour, step.points, 'moved');
       this.lines.clear();
       this.fitCache = null;
+      this.tailCache = null;
     }
   }
 
@@ -370,7 +384,7 @@ export class Watch {
   private watchFloat(): void {
     const index = this.track.noiseIndex(this.lookedAt);
     if (index === null) return;
-    const usual = this.noiseHistory.length >= 6 ? median(this.noiseHistory) : null;
+    const usual = this.usualNoise;
     const limit = this.track.spacing < 0.75 ? 0.22 : 0.18;
     if (this.frozen) {
       if (index > 0.62 * this.frozen.usual) {
@@ -378,6 +392,7 @@ export class Watch {
         this.frozen = null;
         this.frozenLooks = 0;
         this.lines.clear();
+        this.tailCache = null;
       } else {
         this.frozen = { ...this.frozen, index };
         this.track.mask(this.frozen.since, this.lookedAt);
@@ -397,6 +412,8 @@ export class Watch {
       this.frozenLooks = 0;
       this.noiseHistory.push(index);
       if (this.noiseHistory.length > 120) this.noiseHistory.shift();
+      const n = this.noiseHistory.length;
+      if (n === 6 || (n > 6 && Math.round(this.lookedAt / LOOK_H) % 4 === 0)) this.usualNoise = median(this.noiseHistory);
     }
   }
 
@@ -487,6 +504,7 @@ export class Watch {
   }
 
   private judgeAirlock(hour: number): void {
+    if (!this.peaked.on || (this.airlock.on && this.terminal.on)) return;
     // Any window bounds the present rate from above while it falls; the sharpest one wins.
     let upper = Number.POSITIVE_INFINITY;
     let lower = Number.NEGATIVE_INFINITY;
@@ -511,7 +529,8 @@ export class Watch {
     const upper48 = line48 ? -line48.slope + 1.64 * line48.se : null;
     const inside = level !== null && level <= this.zoneTop() && this.peaked.on;
     // The tail is only asked where the fall is slow enough for it to matter.
-    const slow = inside && upper48 !== null && upper48 < 1.2;
+    const open = !this.terminal.on || !this.bottle.on;
+    const slow = open && inside && upper48 !== null && upper48 < 1.2;
     const left = slow && this.tail() ? this.remainingNow() : null;
     const most = left && left.value + 1.28 * left.sd;
 
@@ -544,17 +563,18 @@ export class Watch {
     const prior = this.fgPrior();
     const limit = this.stuckFloor();
     const line48 = this.line(48);
-    const line72 = this.line(72);
     const slow = (line: Line | null, rate: number, upper: number): boolean =>
       line !== null && -line.slope < rate && -line.slope + 1.64 * line.se < upper;
     const settled = this.quietSinceAddition(60, 120);
-    const begun = this.progress() > 0.12 || hour - (this.started.since ?? hour) > 96;
-    const flat = begun && (slow(line48, 0.5, 0.75) || slow(line72, 0.35, 0.5));
-    const moving = [8, 12, 24].some((window) => {
-      const line = this.line(window);
-      return line !== null && -line.slope - (window === 24 ? 1.64 : 2.5) * line.se > 1;
-    });
-    hold(this.stuck, hour, level > limit && flat && settled, 4, moving || level < limit);
+    const begun = this.progress(level) > 0.12 || hour - (this.started.since ?? hour) > 96;
+    const flat = level > limit && settled && begun && (slow(line48, 0.5, 0.75) || slow(this.line(72), 0.35, 0.5));
+    const moving =
+      this.stuck.on &&
+      [8, 12, 24].some((window) => {
+        const line = this.line(window);
+        return line !== null && -line.slope - (window === 24 ? 1.64 : 2.5) * line.se > 1;
+      });
+    hold(this.stuck, hour, flat, 4, moving || level < limit);
     if (this.stuck.on) this.stuckCold = this.coldNow();
 
     const rate = line48 ? -line48.slope : null;
