@@ -29,6 +29,8 @@ const config = [
     },
   },
   { files: ['lib/core/**/*.ts'], rules: { 'no-restricted-syntax': ['error', ...pureCore] } },
+  // A test's `useDatabase()` is no React hook.
+  { files: ['tests/**'], rules: { 'react-hooks/rules-of-hooks': 'off' } },
   {
     // The reader of the environment itself, and the files that build an environment for a child process.
     files: ['lib/config/env.ts', 'scripts/**', 'tests/**', 'vitest.config.ts', 'instrumentation.ts', 'next.config.mjs'],
