@@ -1,6 +1,6 @@
-import { QueryTypes } from 'sequelize';
 import type { Role } from '@/lib/core/roles';
 import { database } from '../client';
+import { runPrepared, type Prepared } from './prepared';
 
 export interface SessionRow {
   personId: string;
@@ -9,15 +9,17 @@ export interface SessionRow {
   role: Role | null;
 }
 
-/** An open sign-in with the person's memberships, oldest first: one row each, at least one while the sign-in is open, none once it has ended. */
-export function openSession(signInId: string): Promise<SessionRow[]> {
-  return database().query<SessionRow>(
-    `select s.person_id as "personId", extract(epoch from now() - s.last_seen_at)::float8 as "seenS", m.cellar_id as "cellarId", m.role
+const OPEN: Prepared = {
+  name: 'open-session',
+  text: `select s.person_id as "personId", extract(epoch from now() - s.last_seen_at)::float8 as "seenS", m.cellar_id as "cellarId", m.role
      from sign_ins s left join memberships m on m.person_id = s.person_id
-     where s.id = $signInId and s.ended_at is null and s.expires_at > now()
+     where s.id = $1 and s.ended_at is null and s.expires_at > now()
      order by m.created_at, m.cellar_id`,
-    { bind: { signInId }, type: QueryTypes.SELECT },
-  );
+};
+
+/** An open sign-in with the person's memberships, oldest first: one row each, at least one while the sign-in is open, none once it has ended. Every request asks. */
+export async function openSession(signInId: string): Promise<SessionRow[]> {
+  return (await runPrepared<SessionRow>(database(), OPEN, [signInId])).rows;
 }
 
 /** Two servers may see the person in the same minute: the second changes nothing. */

@@ -29,7 +29,7 @@ export interface RouteContext<E extends Endpoint> {
 }
 
 /** Longer than any answer takes; past it the database stalls, and waiting longer helps nobody. */
-const DEADLINE_MS = 8_000;
+const DEADLINE_MS = 6_000;
 
 /**
  * A route: who asks, may they, is the request well formed, one service call, an
