@@ -1,7 +1,7 @@
 import { Client } from 'pg';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { until } from '../support/processes';
-import { House, untilServed } from '../support/house';
+import { PressedBroker, untilServed } from '../support/pressed-broker';
 import { seeded } from '../support/random';
 
 const DEVICES = 20;
@@ -12,17 +12,17 @@ const MB = 1 << 20;
 const random = seeded(42);
 const pause = (ms: number) => new Promise((resolve) => setTimeout(resolve, ms));
 
-let house: House;
+let pressed: PressedBroker;
 beforeAll(async () => {
-  house = await House.build();
-  await house.startBroker();
-  await house.press(DEVICES, { inFlight: IN_FLIGHT, keepalive: KEEPALIVE_S, everyMs: 5 });
+  pressed = await PressedBroker.build();
+  await pressed.startBroker();
+  await pressed.press(DEVICES, { inFlight: IN_FLIGHT, keepalive: KEEPALIVE_S, everyMs: 5 });
 });
-afterAll(() => house.close());
+afterAll(() => pressed.close());
 
 /** Keeps everybody out of the readings for as long as `during` takes. */
 async function stalled(during: () => Promise<void>): Promise<void> {
-  const locker = new Client({ connectionString: house.cluster.url });
+  const locker = new Client({ connectionString: pressed.cluster.url });
   await locker.connect();
   try {
     await locker.query('begin; lock table readings in access exclusive mode');
@@ -38,11 +38,11 @@ describe('the database under load', () => {
     const recoveries: number[] = [];
     for (let time = 0; time < TIMES; time += 1) {
       await pause(random() * 1_000);
-      await house.killDatabase();
+      await pressed.killDatabase();
       await pause(random() * 1_000);
-      await house.startDatabase();
-      recoveries.push(await untilServed(house));
-      expect(await house.missing()).toEqual([]);
+      await pressed.startDatabase();
+      recoveries.push(await untilServed(pressed));
+      expect(await pressed.missing()).toEqual([]);
     }
     console.log(`served again after the database was killed, ms from its start: ${recoveries.join(', ')}`);
   });
@@ -50,64 +50,64 @@ describe('the database under load', () => {
   it(`stopped at once ${TIMES} times, likewise`, async () => {
     for (let time = 0; time < TIMES; time += 1) {
       await pause(random() * 1_000);
-      await house.cluster.stop('immediate');
-      await house.startDatabase();
-      await untilServed(house);
-      expect(await house.missing()).toEqual([]);
+      await pressed.cluster.stop('immediate');
+      await pressed.startDatabase();
+      await untilServed(pressed);
+      expect(await pressed.missing()).toEqual([]);
     }
-    await house.checkDatabase();
+    await pressed.checkDatabase();
   });
 
   it(`stalled ${TIMES} times longer than a keep-alive, acknowledges nothing meanwhile, loses no connection, and holds little`, async () => {
-    const before = await house.broker.memory();
-    const reconnects = () => house.devices.reduce((sum, device) => sum + device.reconnects, 0);
+    const before = await pressed.broker.memory();
+    const reconnects = () => pressed.devices.reduce((sum, device) => sum + device.reconnects, 0);
     for (let time = 0; time < TIMES; time += 1) {
-      await until('every device to be connected', () => house.devices.every((device) => device.client.connected));
+      await until('every device to be connected', () => pressed.devices.every((device) => device.client.connected));
       const connections = reconnects();
       await stalled(async () => {
         await pause(100);
-        const acknowledged = house.acknowledged;
+        const acknowledged = pressed.acknowledged;
         await pause((KEEPALIVE_S * 1.6 + random() * 2) * 1_000);
-        expect(house.acknowledged).toBe(acknowledged);
+        expect(pressed.acknowledged).toBe(acknowledged);
       });
-      await untilServed(house);
+      await untilServed(pressed);
       expect(reconnects()).toBe(connections);
-      expect(await house.missing()).toEqual([]);
+      expect(await pressed.missing()).toEqual([]);
     }
-    expect((await house.broker.memory()) - before).toBeLessThan(50 * MB);
+    expect((await pressed.broker.memory()) - before).toBeLessThan(50 * MB);
   });
 
   it(`stalled ${TIMES} times with the broker killed inside, loses nothing`, async () => {
     for (let time = 0; time < TIMES; time += 1) {
       await stalled(async () => {
         await pause(random() * 1_000);
-        await house.killBroker();
-        await house.startBroker();
+        await pressed.killBroker();
+        await pressed.startBroker();
         await pause(random() * 1_000);
       });
-      await untilServed(house);
-      expect(await house.missing()).toEqual([]);
+      await untilServed(pressed);
+      expect(await pressed.missing()).toEqual([]);
     }
   });
 
   it('refusing connections is asked again with growing pauses, not in a storm', async () => {
-    await house.cluster.stop('fast');
-    const from = house.broker.lines.length;
+    await pressed.cluster.stop('fast');
+    const from = pressed.broker.lines.length;
     await pause(5_000);
-    const tries = house.broker.lines.slice(from).filter((line) => String(line.msg).startsWith('the database did not take a batch'));
+    const tries = pressed.broker.lines.slice(from).filter((line) => String(line.msg).startsWith('the database did not take a batch'));
     // Two lanes, pauses that double from 0.1 s: about six tries each in five seconds.
     expect(tries.length).toBeGreaterThan(0);
     expect(tries.length).toBeLessThan(30);
-    await house.startDatabase();
-    await untilServed(house);
-    expect(await house.missing()).toEqual([]);
+    await pressed.startDatabase();
+    await untilServed(pressed);
+    expect(await pressed.missing()).toEqual([]);
   });
 
   it('in the end every reading that was sent is there, once', async () => {
-    await house.settle();
-    expect(await house.missing()).toEqual([]);
-    const sent = house.devices.reduce((sum, device) => sum + device.sent.length, 0);
-    expect([house.acknowledged, await house.count('readings'), await house.count('refusals')]).toEqual([sent, sent, 0]);
-    console.log(`sent ${sent}, acknowledged ${house.acknowledged}, rows ${await house.count('readings')}, refused 0`);
+    await pressed.settle();
+    expect(await pressed.missing()).toEqual([]);
+    const sent = pressed.devices.reduce((sum, device) => sum + device.sent.length, 0);
+    expect([pressed.acknowledged, await pressed.count('readings'), await pressed.count('refusals')]).toEqual([sent, sent, 0]);
+    console.log(`sent ${sent}, acknowledged ${pressed.acknowledged}, rows ${await pressed.count('readings')}, refused 0`);
   });
 });
