@@ -13,8 +13,11 @@ describe('policies', () => {
     }
   });
 
-  it('lets a guest look at batches and people and do nothing else', () => {
-    expect(actionsOf('guest')).toEqual(['batches.read', 'members.read']);
+  it('lets a guest look, write tasting notes, and change nothing else', () => {
+    const changes = actionsOf('guest').filter((action) => !action.endsWith('.read'));
+    expect(changes.filter((action) => String(action) !== 'tastings.write')).toEqual([]);
+    for (const action of ['alerts.read', 'sensors.read'] as const) expect(may('guest', action)).toBe(false);
+    for (const action of ['batches.read', 'members.read'] as const) expect(may('guest', action)).toBe(true);
   });
 
   it('keeps people, sensors and the cellar itself to the keeper', () => {
