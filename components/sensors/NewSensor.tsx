@@ -10,14 +10,7 @@ import { createSensor } from '@/lib/client/sensors';
 import { ClientError } from '@/lib/client/fetcher';
 import { createSensor as createSensorSchema, type CreatedSensorBody } from '@/lib/contracts/sensors';
 import { ConnectLines, CopyLine, type Doors } from './ConnectLines';
-
-const INTERVALS = [
-  { seconds: 60, name: '1 min' },
-  { seconds: 300, name: '5 min' },
-  { seconds: 900, name: '15 min' },
-  { seconds: 1_800, name: '30 min' },
-  { seconds: 3_600, name: '1 h' },
-];
+import { IntervalOptions } from './Intervals';
 
 /** The secret, this one time, and the lines that use it. */
 function Shown({ sensor, doors }: { sensor: CreatedSensorBody; doors: Doors }) {
@@ -109,11 +102,7 @@ export function NewSensor({ doors }: { doors: Doors }) {
           {failed && <FormError>{failed}</FormError>}
           <Field label="name" name="name" autoFocus maxLength={60} autoComplete="off" hint="What is written on it, such as Float 05" error={errors.name?.[0]} />
           <Select label="speaks every" name="interval_s" defaultValue="900" hint="As it is set in the sensor; silence is measured by it" error={errors.interval_s?.[0]}>
-            {INTERVALS.map((interval) => (
-              <option key={interval.seconds} value={interval.seconds}>
-                {interval.name}
-              </option>
-            ))}
+            <IntervalOptions />
           </Select>
           <div className="flex flex-wrap gap-2">
             <Button type="submit" look="first" disabled={busy}>

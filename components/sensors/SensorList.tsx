@@ -17,7 +17,7 @@ const COLUMNS = 'strip:grid strip:grid-cols-[8.5rem_minmax(8rem,1.3fr)_minmax(8r
 /** A figure under its name on a phone, in its column elsewhere. */
 function Cell({ name, children, right = false }: { name: string; children: React.ReactNode; right?: boolean }) {
   return (
-    <div className={`type-label min-w-0 max-strip:flex max-strip:justify-between max-strip:gap-3 ${right ? 'strip:text-right' : ''}`}>
+    <div className={`type-label min-w-0 max-strip:flex max-strip:gap-[1ch] ${right ? 'strip:text-right' : ''}`}>
       <dt className="text-ink2 strip:hidden">{name}</dt>
       <dd className="min-w-0 text-ink">{children}</dd>
     </div>
@@ -42,18 +42,18 @@ function Row({ sensor, now, timeZone }: { sensor: SensorBody; now: number; timeZ
             <State state={state} word={word} />
           </span>
         </div>
-        <dl className="contents">
+        <dl className="grid grid-cols-[3fr_2fr] gap-x-4 strip:contents">
           <Cell name="in">
             {sensor.batch ? (
-              <Link href={`/batches/${sensor.batch.id}`} className="relative z-10 block truncate font-serif text-[0.875rem] underline-offset-2 hover:underline">
+              <Link href={`/batches/${sensor.batch.id}`} className="relative z-10 block truncate underline-offset-2 hover:underline strip:font-serif strip:text-[0.875rem]">
                 {sensor.batch.name}
               </Link>
             ) : (
               <span className="text-ink2">no vessel</span>
             )}
           </Cell>
-          <Cell name="last heard">{heardWords(sensor, now, timeZone)}</Cell>
-          <Cell name="last word">
+          <Cell name="heard">{heardWords(sensor, now, timeZone)}</Cell>
+          <Cell name="said">
             {sensor.last ? (
               <>
                 <b className="font-semibold">{gravityWords(sensor.last.gravity)}</b> {temperatureWords(sensor.last.temperature)}
@@ -64,7 +64,7 @@ function Row({ sensor, now, timeZone }: { sensor: SensorBody; now: number; timeZ
           </Cell>
           <Cell name="cell">{cellWords(sensor.last?.battery)}</Cell>
           <Cell name="link">{linkWords(sensor.last?.signal)}</Cell>
-          <Cell name="refused, 24 h" right>
+          <Cell name="refused" right>
             <span className={sensor.refused_24h > 0 ? 'font-semibold text-ochre' : 'text-ink2'}>{sensor.refused_24h}</span>
           </Cell>
         </dl>

@@ -12,6 +12,7 @@ import type { SensorBody } from '@/lib/contracts/sensors';
 import { useMe } from '@/lib/client/me';
 import { useSensor } from '@/lib/client/sensors';
 import { ConnectLines, type Doors } from './ConnectLines';
+import { Naming } from './Naming';
 import { Placement, useSensorChange } from './Placement';
 import { Refusals } from './Refusals';
 import { cellWords, everyWords, gravityWords, heardWords, linkWords, sensorState, temperatureWords } from './words';
@@ -114,6 +115,12 @@ export function SensorPage({ id, doors }: { id: string; doors: Doors }) {
         <div className="wide:border-l">
           <GroupBar word="Vessel" />
           <Placement sensor={sensor} mayAssign={may('sensors.assign')} timeZone={timeZone} />
+          {may('sensors.manage') && (
+            <>
+              <GroupBar word="Name" />
+              <Naming sensor={sensor} />
+            </>
+          )}
           <GroupBar word="How it reaches this house" />
           <div className="px-(--margin) py-4">
             <p className="type-body pb-4 text-ink2">Its secret was shown when it was added and is not kept; put it where the lines say SECRET.</p>
