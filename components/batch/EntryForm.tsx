@@ -8,6 +8,7 @@ import { createEntry } from '@/lib/client/entries';
 import { ClientError } from '@/lib/client/fetcher';
 import { NECKS } from '@/lib/core/types';
 import { emptyDraft, entryOf, errorsOf, FIELDS, toLocal, type DraftErrors, type EntryDraft, type EntryKind } from './entry-form';
+import { focusFirstError } from './focus';
 import { NECK_WORDS } from './words';
 
 const KINDS: { kind: EntryKind; name: string; alters: boolean }[] = [
@@ -66,7 +67,10 @@ export function EntryForm({ batchId, kind, neck = '', now, timeZone, mayAlter, o
     const made = entryOf(draft, timeZone, clientId.current);
     setErrors(made.errors ?? {});
     setFailed(null);
-    if (made.errors) return;
+    if (made.errors) {
+      focusFirstError();
+      return;
+    }
     setSending(true);
     try {
       await createEntry(batchId, made.entry);

@@ -17,11 +17,7 @@ import { BatchFields } from './BatchFields';
 import { batchErrors, batchToCreate, newDraft, type BatchDraft, type BatchErrors } from './batch-form';
 import { toLocal } from './entry-form';
 import { typedNumber } from './figures';
-
-/** The first place that is wrong is where a person goes on. */
-function focusFirstError() {
-  requestAnimationFrame(() => document.querySelector<HTMLElement>('[aria-invalid="true"]')?.focus());
-}
+import { focusFirstError } from './focus';
 
 export function NewBatchPage() {
   const { me, may, error, retry } = useMe();

@@ -9,6 +9,7 @@ import type { BatchBody, UpdateBatch } from '@/lib/contracts/batches';
 import { BatchFields } from './BatchFields';
 import { batchErrors, batchToUpdate, draftOf, type BatchErrors } from './batch-form';
 import { toLocal } from './entry-form';
+import { focusFirstError } from './focus';
 
 interface SetupFormProps {
   batch: BatchBody;
@@ -46,6 +47,7 @@ export function SetupForm({ batch, now, timeZone, onDone }: SetupFormProps) {
     const made = batchToUpdate(draft, batch, timeZone);
     setErrors(made.errors ?? {});
     if (made.change) void send(made.change);
+    else focusFirstError();
   }
 
   return (

@@ -27,9 +27,6 @@ export function Sheet({ title, onClose, children }: { title: string; onClose: ()
         event.preventDefault();
         onClose();
       }}
-      onMouseDown={(event) => {
-        if (event.target === dialog.current) onClose();
-      }}
       className="sheet m-0 ml-auto h-dvh max-h-none w-full max-w-[440px] border-l-[1.5px] border-ink bg-sheet p-0 text-ink backdrop:bg-ink/35 max-strip:mt-auto max-strip:h-auto max-strip:max-h-[92dvh] max-strip:max-w-none max-strip:border-l-0 max-strip:border-t-[1.5px]"
     >
       <div className="flex min-h-full flex-col">

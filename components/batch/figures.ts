@@ -10,7 +10,7 @@ export const grams = (value: number): string => (value >= 10_000 ? `${Number((va
 
 export function points(value: number): string {
   const text = Math.abs(value) >= 9.95 ? value.toFixed(0) : value.toFixed(1).replace(/\.0$/, '');
-  return `${minus(text)} ${text === '1' ? 'point' : 'points'}`;
+  return `${minus(text)} ${text === '1' || text === '-1' ? 'point' : 'points'}`;
 }
 
 /** Half the width of an interval, as `± 0.003`; never less than the last decimal shown. */

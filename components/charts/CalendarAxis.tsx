@@ -23,12 +23,13 @@ export function CalendarAxis({ calendar, span, left = 0, right = 0, className = 
         // The middle of a stretch that starts before the span would lie outside it.
         const seenFrom = Math.max(0, from);
         const seenWidth = Math.min(100, from + width) - seenFrom;
-        if (seenWidth <= width * 0.45) return null;
-        const colours = label.today ? 'bg-ink text-on' : 'text-ink2';
+        if (label.names === 'rule' ? from < 2 || from > 98 : seenWidth <= width * 0.45) return null;
+        const block = label.today && label.names === 'room';
+        const place = label.names === 'rule' ? { left: `${from - width / 2}%`, width: `${width}%` } : { left: `${seenFrom}%`, width: `${seenWidth}%` };
         return (
-          <div key={label.from} className={`absolute inset-y-0 flex flex-col items-center justify-center overflow-hidden whitespace-nowrap ${colours}`} style={{ left: `${seenFrom}%`, width: `${seenWidth}%` }}>
-            <span className={label.strong && !label.today ? 'text-ink' : ''}>{label.top || '\u00a0'}</span>
-            <span className={label.strong || label.today ? 'font-bold' : 'font-medium'}>{label.bottom}</span>
+          <div key={label.from} className={`absolute inset-y-0 flex flex-col items-center justify-center overflow-hidden whitespace-nowrap ${block ? 'bg-ink text-on' : 'text-ink2'}`} style={place}>
+            <span className={label.strong && !block ? 'text-ink' : ''}>{label.top || '\u00a0'}</span>
+            <span className={label.strong || block ? 'font-bold' : 'font-medium'}>{label.bottom}</span>
           </div>
         );
       })}

@@ -38,6 +38,8 @@ export interface AxisLabel extends Span {
   strong: boolean;
   /** The stretch that holds now. */
   today: boolean;
+  /** An hour names its rule; a day, week or month names the room between two. */
+  names: 'rule' | 'room';
 }
 
 export interface Calendar {
@@ -55,7 +57,7 @@ function hourLabels(days: readonly Day[], step: number, timeZone: string, now: n
     const starts = Array.from({ length: 24 / step }, (_, index) => (index === 0 ? day.from : instantOf({ year: wall.year, month: wall.month, day: wall.day, hour: index * step }, timeZone)));
     return starts.map((from, index) => {
       const to = starts[index + 1] ?? day.to;
-      return { from, to, top: index === 0 ? `${day.weekday} ${day.date}` : '', bottom: clock(from, timeZone), strong: index === 0, today: from <= now && now < to };
+      return { from, to, top: index === 0 ? `${day.weekday} ${day.date}` : '', bottom: clock(from, timeZone), strong: index === 0, today: from <= now && now < to, names: 'rule' };
     });
   });
 }
@@ -65,7 +67,7 @@ function groupLabels(days: readonly Day[], now: number, startsGroup: (day: Day) 
   for (const day of days) {
     const last = groups[groups.length - 1];
     if (last && !startsGroup(day)) last.to = day.to;
-    else groups.push({ from: day.from, to: day.to, ...words(day), strong: false, today: false });
+    else groups.push({ from: day.from, to: day.to, ...words(day), strong: false, today: false, names: 'room' });
   }
   return groups.map((group) => ({ ...group, today: group.from <= now && now < group.to }));
 }
@@ -83,6 +85,11 @@ export function calendarOf(span: Span, timeZone: string, width: number, now: num
   const step = HOUR_STEPS.find((hours) => (perDay * hours) / 24 >= 44);
   if (step !== undefined && perDay >= 44 * 4) {
     const labels = hourLabels(days, step, timeZone, now).filter((label) => label.to > span.from && label.from < span.to);
+    // Where no midnight is in sight the first whole hour names the day.
+    const seen = labels.filter((label) => label.from >= span.from);
+    const first = seen[1] ?? seen[0];
+    const day = first && days.find((item) => item.from <= first.from && first.from < item.to);
+    if (first && day && !seen.some((label) => label.top !== '')) first.top = `${day.weekday} ${day.date}`;
     return { labels, rules: labels.map((label) => label.from), weekends };
   }
   if (perDay >= roomy) {
@@ -94,6 +101,7 @@ export function calendarOf(span: Span, timeZone: string, width: number, now: num
       bottom: day.date === 1 && perDay >= 56 ? `1 ${day.month}` : String(day.date),
       strong: day.weekend || day.date === 1,
       today: day.from <= now && now < day.to,
+      names: 'room' as const,
     }));
     return { labels, rules: days.map((day) => day.from), weekends };
   }

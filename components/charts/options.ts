@@ -51,7 +51,7 @@ export function chartOptions(scene: () => Scene, size: { width: number; height: 
   const band = (plot: uPlot) => hazePattern(plot.ctx, scene().palette, ratio(), true);
   const silent: uPlot.Series = { scale: 'gravity', points: HIDDEN, spanGaps: true };
   const underlay = calendarRules(() => scene().calendar);
-  const overlay = [stripNames, posts, likelyEnd, bedWords, expectedWords, rings, bracket, nowLine(scene().timeZone)];
+  const overlay = [stripNames, bedWords, posts, likelyEnd, expectedWords, rings, bracket, nowLine(scene().timeZone)];
 
   const series: uPlot.Series[] = [{}];
   series[SERIES.bandHigh] = silent;

@@ -263,7 +263,9 @@ function figuresNow(view: View, x: number, timeZone: string): void {
     const width = context.measureText(text).width;
     // Right of the line, or left of it where the plot ends.
     const at = x + 8 + width <= view.right ? x + 8 : x - 8 - width;
-    if (at >= view.left) context.fillText(text, at, y);
+    if (at < view.left) return;
+    if (at < x) underText(view, text, at, y);
+    else context.fillText(text, at, y);
   };
   if (layout.temperature && words) {
     const lane = layout.style === 'lane';

@@ -105,6 +105,7 @@ export function wholeSpan(picture: Picture, pitchedAt: number | null): Span {
   const past = Math.max(picture.now - start, DAY);
   const foreseen = Math.min((picture.curve.at(-1)?.at ?? 0) - picture.now, 6 * DAY);
   const wanted = picture.likelyEnd ? Math.max(picture.likelyEnd.hi - picture.now + DAY, foreseen) : foreseen;
-  const ahead = Math.max(3 * DAY, Math.min(wanted, past, 21 * DAY));
+  // Room right of now for its figures, however long the past.
+  const ahead = Math.max(3 * DAY, past * 0.16, Math.min(wanted, past, 21 * DAY));
   return { from: start - (past + ahead) * 0.025, to: picture.now + ahead };
 }

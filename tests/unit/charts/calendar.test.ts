@@ -53,4 +53,9 @@ describe('the calendar axis', () => {
     expect(labels.map((label) => label.bottom)).toContain('12:00');
     expect(labels.find((label) => label.strong)).toMatchObject({ top: 'Fri 16', bottom: '00:00' });
   });
+
+  it('names the day of hours that show no midnight', () => {
+    const { labels } = calendarOf({ from: utc('2026-10-15T06:20:00Z'), to: utc('2026-10-15T14:00:00Z') }, 'UTC', 900, now);
+    expect(labels.flatMap((label) => (label.top ? [label.top] : []))).toEqual(['Thu 15']);
+  });
 });
