@@ -7,7 +7,7 @@ export interface BatchStateRow<A> {
 }
 
 /** The last judgement kept of a batch, as it goes over the wire. */
-export async function batchState<A>(batchId: string, transaction: Transaction): Promise<BatchStateRow<A> | null> {
+export async function batchState<A>(batchId: string, transaction?: Transaction): Promise<BatchStateRow<A> | null> {
   const [row] = await database().query<BatchStateRow<A>>(`select assessed_at as "assessedAt", assessment from batch_states where batch_id = $batchId`, {
     bind: { batchId },
     type: QueryTypes.SELECT,

@@ -11,6 +11,7 @@ import { assess } from '@/lib/core/assess';
 import { CALL_NAMES, type CallName } from '@/lib/core/types';
 import { evaluateAlerts } from '@/lib/services/alerts/evaluate';
 import { notifyChange } from '@/lib/services/changes';
+import { jobsFromCalls } from '@/lib/services/jobs/from-calls';
 import { setupOf } from './setup';
 
 /** Points of the curve that the shelf's lanes get; the batch page asks for all. */
@@ -39,6 +40,7 @@ export function assessBatch(batchId: string, { clock = systemClock, silenceCount
     const at = clock.now();
     if (batch.state === 'ended') {
       await evaluateAlerts({ batch, cellar, assessment: null, context: { neck: batch.neck, events: [], silenceCounts }, at }, transaction);
+      await jobsFromCalls(batch, null, [], at, transaction);
       return 'ended';
     }
 
@@ -49,6 +51,7 @@ export function assessBatch(batchId: string, { clock = systemClock, silenceCount
 
     await keep(batch, presentJudgement(judgement), new Date(at), transaction);
     await evaluateAlerts({ batch, cellar, assessment: judgement.assessment, context: { neck: batch.neck, events: setup.events, silenceCounts }, at }, transaction);
+    await jobsFromCalls(batch, judgement.assessment, entries, at, transaction);
     return 'assessed';
   });
 }

@@ -7,6 +7,7 @@ import type { BatchBody, CreateBatch } from '@/lib/contracts/batches';
 import { InvalidError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { notifyChange } from '../changes';
+import { loadVersionById } from '../musts/load';
 import { loadSensor, placeSensor } from '../sensors/place';
 import { getBatch } from './get';
 
@@ -22,6 +23,7 @@ export async function createBatch(actor: Actor, input: CreateBatch, clock: Clock
   if (pitchedAt && pitchedAt.getTime() > now + AHEAD_MS) throw new InvalidError('The pitch lies ahead.', { pitched_at: ['lies ahead; leave it empty and log the pitch when it is done'] });
 
   return inTransaction(async (transaction) => {
+    if (input.must_version_id !== null) await loadVersionById(actor.cellarId, input.must_version_id, transaction);
     const batch = await Batch.create(
       {
         cellarId: actor.cellarId,
@@ -42,6 +44,7 @@ export async function createBatch(actor: Actor, input: CreateBatch, clock: Clock
         alcoholToleranceAbv: input.alcohol_tolerance_abv,
         temperatureMinC: input.temperature_min_c,
         temperatureMaxC: input.temperature_max_c,
+        mustVersionId: input.must_version_id,
         createdBy: actor.personId,
       },
       { transaction },
@@ -57,7 +60,7 @@ export async function createBatch(actor: Actor, input: CreateBatch, clock: Clock
       const changed = await placeSensor(sensor, batch.id, pitchedAt ?? new Date(now), transaction);
       for (const id of changed) await notifyChange({ cellar: actor.cellarId, kind: 'sensor', batch: id }, transaction);
     }
-    await auditBy(actor, 'batch.created', batch.id, { name: input.name, sensor: input.sensor }, transaction);
+    await auditBy(actor, 'batch.created', batch.id, { name: input.name, sensor: input.sensor, must: input.must_version_id }, transaction);
     await notifyChange({ cellar: actor.cellarId, kind: 'batch', batch: batch.id }, transaction);
     return getBatch(actor, batch.id, transaction);
   });

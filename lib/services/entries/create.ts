@@ -1,14 +1,20 @@
+import { Op, type Transaction } from 'sequelize';
 import { inTransaction } from '@/db/client';
-import { Entry } from '@/db/models';
+import { Entry, type Batch } from '@/db/models';
 import { authorize } from '@/lib/auth/authorize';
 import type { Action, Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
 import type { CreateEntry, EntryBody, LOGGED_KINDS } from '@/lib/contracts/batches';
+import { asSugar } from '@/lib/core/additions/effect';
 import { correctHydrometer } from '@/lib/core/gravity/hydrometer';
+import { correctBrix, gravityByRefractometer, sgOfBrix } from '@/lib/core/gravity/refractometer';
 import { ConflictError, InvalidError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { loadBatch } from '../batches/load';
 import { notifyChange } from '../changes';
+import { ledgerOf } from '../drink/ledger';
+import { ingredientNamed, ownIngredients } from '../drink/load';
+import { answerJobs } from '../jobs/answer';
 import { applyEntry } from './effects';
 import { namesOf } from './names';
 import { presentEntry } from './present';
@@ -31,12 +37,41 @@ const AHEAD_MS = 10 * 60_000;
 /** Where the correction for temperature holds, °C. */
 const CORRECTED_C = { min: 0, max: 40 };
 
-function gravityOf(input: CreateEntry): number | null {
-  if (input.gravity === null || input.temperature_c === null || (input.kind !== 'reading' && input.kind !== 'pitch')) return input.gravity;
-  if (input.temperature_c < CORRECTED_C.min || input.temperature_c > CORRECTED_C.max) {
+type Measured = Pick<CreateEntry, 'kind' | 'gravity' | 'temperature_c' | 'calibrated_at_c' | 'detail'>;
+
+/** Gravity at 20 °C as a hydrometer or, in a drink with alcohol too, a refractometer told it. */
+export async function gravityOf(batch: Batch, input: Measured, transaction: Transaction): Promise<number | null> {
+  const { gravity, temperature_c: sampleC, detail } = input;
+  if (gravity === null && typeof detail?.brix === 'number') return byRefractometer(batch, detail.brix, sampleC, transaction);
+  if (gravity === null || sampleC === null || (input.kind !== 'reading' && input.kind !== 'pitch')) return gravity;
+  if (sampleC < CORRECTED_C.min || sampleC > CORRECTED_C.max) {
     throw new InvalidError('The sample is too cold or too hot for a reading.', { temperature_c: [`must be ${CORRECTED_C.min} to ${CORRECTED_C.max} °C for a reading; let the sample come nearer to 20 °C`] });
   }
-  return correctHydrometer(input.gravity, input.temperature_c, input.calibrated_at_c ?? undefined);
+  return correctHydrometer(gravity, sampleC, input.calibrated_at_c ?? undefined);
+}
+
+async function byRefractometer(batch: Batch, shown: number, sampleC: number | null, transaction: Transaction): Promise<number> {
+  const brix = sampleC === null ? shown : correctBrix(shown, sampleC);
+  if (brix === null) throw new InvalidError('The sample is too cold or too warm for this table.', { temperature_c: ['must be 10 to 20 °C; leave it empty where the instrument corrects itself'] });
+  if (batch.pitchedAt === null) return sgOfBrix(brix);
+  const entries = await Entry.findAll({ where: { batchId: batch.id, removedAt: { [Op.is]: null } }, transaction });
+  const og = ledgerOf(batch, entries).effectiveOg;
+  if (og === null) throw new InvalidError('Alcohol changes what a refractometer shows.', { 'detail.brix': ['needs the original gravity of the batch; tell that first, or use a hydrometer'] });
+  const gravity = gravityByRefractometer(og, brix);
+  if (gravity === null) throw new InvalidError('The reading is above the original gravity.', { 'detail.brix': ['is more than the must had at the start'] });
+  return gravity;
+}
+
+/** Sugar or fruit that a weighed ingredient brings, where the person did not tell the sugar itself. */
+async function broughtBy(actor: Actor, input: CreateEntry, transaction: Transaction): Promise<{ sugarG: number | null; fruitG: number | null }> {
+  const told = { sugarG: input.sugar_g, fruitG: input.fruit_g };
+  const { ingredient: key, grams } = input.detail ?? {};
+  if (input.kind !== 'addition' || !key || !grams || told.sugarG !== null || told.fruitG !== null) return told;
+  const ingredient = ingredientNamed(key, await ownIngredients(actor.cellarId, [key], transaction));
+  if (!ingredient) throw new InvalidError('There is no such ingredient.', { 'detail.ingredient': ['is not in the catalogue'] });
+  if (ingredient.kind === 'fruit') return { sugarG: null, fruitG: grams };
+  const brought = asSugar(ingredient, grams);
+  return { sugarG: brought.what === 'sugar' && brought.sugarG > 0 ? brought.sugarG : null, fruitG: null };
 }
 
 /**
@@ -58,6 +93,8 @@ export async function createEntry(actor: Actor, batchId: string, input: CreateEn
 
     async function write(): Promise<Entry> {
       await applyEntry(batch, input, transaction);
+      const gravity = await gravityOf(batch, input, transaction);
+      const { sugarG, fruitG } = await broughtBy(actor, input, transaction);
       const created = await Entry.create(
         {
           cellarId: actor.cellarId,
@@ -65,15 +102,15 @@ export async function createEntry(actor: Actor, batchId: string, input: CreateEn
           kind: input.kind,
           at,
           text: input.text,
-          gravity: gravityOf(input),
+          gravity,
           gravityRead: input.gravity,
           temperatureC: input.temperature_c,
           calibratedAtC: input.calibrated_at_c,
           neck: input.neck,
           volumeL: input.volume_l,
-          sugarG: input.sugar_g,
-          fruitG: input.fruit_g,
-          detail: input.detail,
+          sugarG,
+          fruitG,
+          detail: typeof input.detail?.brix === 'number' && input.gravity === null ? { ...input.detail, instrument: 'refractometer' } : input.detail,
           personId: actor.personId,
           clientId: input.client_id,
         },
@@ -81,6 +118,7 @@ export async function createEntry(actor: Actor, batchId: string, input: CreateEn
       );
       // The times that the database writes by itself.
       await created.reload({ transaction });
+      await answerJobs(actor, batch, created, transaction);
       await auditBy(actor, 'entry.created', created.id, { batch: batchId, kind: input.kind }, transaction);
       await notifyChange({ cellar: actor.cellarId, kind: 'entry', batch: batchId }, transaction);
       return created;

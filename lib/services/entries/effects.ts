@@ -2,8 +2,9 @@ import { Op, type Transaction } from 'sequelize';
 import { Entry, type Batch } from '@/db/models';
 import type { CreateEntry } from '@/lib/contracts/batches';
 import { InvalidError } from '@/lib/errors';
+import { volumeAfter as after } from '../drink/ledger';
 
-const VOLUME_KINDS = ['pitch', 'rack', 'addition', 'top_up'];
+const VOLUME_KINDS = ['pitch', 'rack', 'addition', 'top_up', 'split', 'blend', 'bottling'];
 /** Rounding of litres typed with three decimals. */
 const LITRES_SLACK = 1e-6;
 
@@ -36,8 +37,8 @@ export async function applyEntry(batch: Batch, entry: CreateEntry, transaction: 
   await batch.save({ transaction });
 }
 
-/** After an entry was taken back, the batch stands as what is left of its log says; where that says nothing it stays as it is. */
-export async function settleBatch(batch: Batch, removed: Entry, transaction: Transaction): Promise<void> {
+/** After an entry was taken back or corrected, the batch stands as its log now says; where that says nothing it stays as it is. */
+export async function settleBatch(batch: Batch, changed: Pick<Entry, 'kind' | 'neck' | 'volumeL'>, transaction: Transaction): Promise<void> {
   const left = await Entry.findAll({
     where: kept(batch.id),
     order: [
@@ -46,15 +47,16 @@ export async function settleBatch(batch: Batch, removed: Entry, transaction: Tra
     ],
     transaction,
   });
-  if (removed.kind === 'pitch') batch.set('pitchedAt', left.findLast((entry) => entry.kind === 'pitch')?.at ?? null);
-  if (removed.neck !== null) batch.set('neck', left.findLast((entry) => entry.neck !== null)?.neck ?? batch.neck);
-  if (removed.volumeL !== null && VOLUME_KINDS.includes(removed.kind)) batch.set('volumeL', volumeAfter(left, batch));
+  if (changed.kind === 'pitch') batch.set('pitchedAt', left.findLast((entry) => entry.kind === 'pitch')?.at ?? null);
+  if (changed.neck !== null) batch.set('neck', left.findLast((entry) => entry.neck !== null)?.neck ?? batch.neck);
+  if (changed.volumeL !== null && VOLUME_KINDS.includes(changed.kind)) batch.set('volumeL', volumeAfter(left, batch));
   await batch.save({ transaction });
 }
 
 function volumeAfter(entries: readonly Entry[], batch: Batch): number {
   const anchor = entries.findLastIndex((entry) => (entry.kind === 'pitch' || entry.kind === 'rack') && entry.volumeL !== null);
   if (anchor < 0) return batch.volumeL;
-  const added = entries.slice(anchor + 1).reduce((sum, entry) => sum + (entry.kind === 'addition' || entry.kind === 'top_up' ? (entry.volumeL ?? 0) : 0), 0);
-  return Math.min((entries[anchor]?.volumeL ?? 0) + added, batch.vesselL);
+  const volume = entries.slice(anchor).reduce(after, 0);
+  // An emptied vessel keeps its last figure: a batch is never of no volume.
+  return volume > 0 ? Math.min(volume, batch.vesselL) : batch.volumeL;
 }

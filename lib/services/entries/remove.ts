@@ -4,12 +4,13 @@ import { Entry } from '@/db/models';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
-import { ForbiddenError, NotFoundError } from '@/lib/errors';
+import { ConflictError, ForbiddenError, NotFoundError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { loadBatch } from '../batches/load';
 import { notifyChange } from '../changes';
 import { settleBatch } from './effects';
 import { mayRemove } from './present';
+import { partOfWork } from './work';
 
 /** Takes an entry back: the log no longer shows it, the past can still be explained by it, and the batch stands as without it. */
 export async function removeEntry(actor: Actor, batchId: string, entryId: string, clock: Clock = systemClock): Promise<void> {
@@ -19,6 +20,8 @@ export async function removeEntry(actor: Actor, batchId: string, entryId: string
     const entry = await Entry.findOne({ where: { id: entryId, batchId, removedAt: { [Op.is]: null } }, transaction });
     if (!entry) throw new NotFoundError('entry');
     if (!mayRemove(actor, entry)) throw new ForbiddenError('You can take back only what you logged yourself.');
+    const work = partOfWork(entry);
+    if (work) throw new ConflictError(`This line is part of ${work}, and cannot be taken back by itself.`);
     await entry.update({ removedAt: new Date(clock.now()), removedBy: actor.personId }, { transaction });
     await settleBatch(batch, entry, transaction);
     await auditBy(actor, 'entry.removed', entryId, { batch: batchId, kind: entry.kind }, transaction);
