@@ -106,7 +106,12 @@ export class Ingest {
       for (const { message, committed } of batch) {
         this.waitingMessages -= 1;
         this.waitingBytes -= message.body.length;
-        committed();
+        try {
+          committed();
+        } catch (error) {
+          // The reading is safe; one sender's trouble must not keep the others from their acknowledgements.
+          log.error({ err: error }, 'a committed message could not be acknowledged');
+        }
       }
       this.signalFull();
     }

@@ -13,7 +13,10 @@ const log = logFor('broker');
 const DRAIN_MS = 7_000;
 
 const { announcer, stop: stopAnnouncer } = startAnnouncer();
-const broker = await startBroker({ host: env().HOST, port: env().MQTT_PORT, record: (messages) => recordMessages(messages, announcer) });
+const broker = await startBroker({ host: env().HOST, port: env().MQTT_PORT, record: (messages) => recordMessages(messages, announcer) }).catch((error: unknown) => {
+  log.fatal({ err: error }, `The broker cannot listen on port ${env().MQTT_PORT} of ${env().HOST}. Set MQTT_PORT to a free port, then start again.`);
+  process.exit(1);
+});
 const stopHeartbeat = startHeartbeat('broker', () => broker.figures());
 const stopPartitions = keepPartitionsAhead();
 log.info({ host: env().HOST, port: broker.port }, 'broker ready');
