@@ -24,7 +24,7 @@ async function changed<T>(answer: T, batchId?: string): Promise<T> {
 }
 
 /** @throws ClientError `conflict` where the bench is stopped and no reason puts the stop aside. */
-export const bottleBatch = async (batchId: string, form: z.input<typeof bottleBatchForm>) => changed(await sendJson<LotBody>('POST', `/batches/${batchId}/bottle`, form), batchId);
+export const bottleBatch = async (batchId: string, form: z.input<typeof bottleBatchForm>) => changed(await sendJson<LotBody>('POST', `/batches/${batchId}/bottle`, { ...form, client_id: form.client_id ?? crypto.randomUUID() }), batchId);
 
 export type LotSearch = Partial<z.input<typeof lotQuery>>;
 

@@ -152,5 +152,7 @@ export const bottleBatchForm = benchForm.extend({
   other_cost: z.number().min(0).max(100_000).nullable().default(null),
   /** Why the stop is put aside; stays on the lot for good. */
   override_reason: text(1000).nullable().default(null),
+  /** Made by the sender, so that sending twice makes one lot. */
+  client_id: z.uuid().nullable().default(null),
 });
 export type BottleBatchForm = z.infer<typeof bottleBatchForm>;

@@ -1,4 +1,5 @@
 import type { Entry } from '@/db/models';
+import type { LinkRow } from '@/db/queries/family';
 import { POINTS_PER_G_PER_L } from '@/lib/core/gravity/extract';
 import { FININGS } from '@/lib/core/additions/fining';
 import { catalogued } from '@/lib/core/must/catalogue';
@@ -66,14 +67,16 @@ export function makeupOf(stories: Stories, batchId: string, until: Date, seen: R
   // A part of a split keeps its parent's sheet for its name and cost; what the sheet brought comes through the parent.
   const own = parent ? null : outcome;
   let volumeL = entries.find((entry) => entry.kind === 'pitch')?.volumeL ?? story?.batch.volumeL ?? 0;
-  let sulphite: Range = fromParent?.sulphiteMgL ?? own?.sulphiteMgPerL.value ?? exactly(0);
+  const lineOf = (link: LinkRow) => entries.find((entry) => (entry.kind === 'blend' || entry.kind === 'top_up') && detailOf(entry).batch_id === link.from && entry.at.getTime() === link.at.getTime());
+  // A batch that began as a blend has no line for what went in: it is what went in.
+  const first = sources.filter(({ link }) => link.kind === 'blend' && !lineOf(link));
+  const firstL = first.reduce((all, { link }) => all + link.litres, 0);
+  let sulphite: Range = first.length > 0 ? sum(first.map(({ link, makeup }) => times(makeup.sulphiteMgL, link.litres / firstL))) : (fromParent?.sulphiteMgL ?? own?.sulphiteMgPerL.value ?? exactly(0));
   for (const entry of entries) {
     const next = volumeAfter(volumeL, entry);
     if (next > volumeL && volumeL > 0 && entry.kind !== 'pitch') sulphite = times(sulphite, volumeL / next);
-    if (entry.kind === 'blend' || entry.kind === 'top_up') {
-      const inflow = sources.find(({ link }) => link.kind !== 'split' && link.from === detailOf(entry).batch_id && link.at.getTime() === entry.at.getTime());
-      if (inflow && next > 0) sulphite = sum([sulphite, times(inflow.makeup.sulphiteMgL, inflow.link.litres / next)]);
-    }
+    const inflow = sources.find(({ link }) => link.kind !== 'split' && lineOf(link) === entry);
+    if (inflow && next > 0) sulphite = sum([sulphite, times(inflow.makeup.sulphiteMgL, inflow.link.litres / next)]);
     const added = sulphiteOf(entry, ingredientOf(entry));
     if (next > 0 && added.hi > 0) sulphite = sum([sulphite, times(added, 1 / next)]);
     volumeL = next;

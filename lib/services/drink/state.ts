@@ -50,11 +50,25 @@ function expectedFinalOf(batch: Batch, effectiveOg: number | null, unfermentable
   return { lo: end(max), value: end((min + max) / 2), hi: end(min) };
 }
 
+/** The last time that something fermentable came in: by the log, by a blend, or before it was split off. */
+function lastFedAt(stories: Stories, batch: Batch, own: Date | null, at: Date): Date | null {
+  const inflows = stories.links.filter((link) => link.to === batch.id && link.at <= at);
+  const times = inflows.flatMap((link) => {
+    if (link.kind !== 'split') return [link.at];
+    const source = stories.of.get(link.from);
+    const before = source && ledgerOf(source.batch, source.entries.filter((entry) => entry.at <= link.at)).lastAdditionAt;
+    return before ? [before] : [];
+  });
+  const all = [...times, ...(own ? [own] : [])];
+  return all.length > 0 ? new Date(Math.max(...all.map((time) => time.getTime()))) : null;
+}
+
 /** What stands in a batch's vessel at `at`, from its log, its sensor and its sources. */
 export async function drinkState(batch: Batch, at: Date, transaction?: Transaction): Promise<DrinkState> {
   const stories = await loadStories(batch, transaction);
   const entries = (stories.of.get(batch.id)?.entries ?? []).filter((entry) => entry.at <= at);
-  const ledger = ledgerOf(batch, entries);
+  const told = ledgerOf(batch, entries);
+  const ledger = { ...told, lastAdditionAt: lastFedAt(stories, batch, told.lastAdditionAt, at) };
   const makeup = makeupOf(stories, batch.id, at);
   const assessment = (await batchState<AssessmentBody>(batch.id, transaction))?.assessment ?? null;
   const floatAt = assessment?.last_reading_at ? new Date(assessment.last_reading_at) : null;
