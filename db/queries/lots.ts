@@ -240,3 +240,9 @@ export function nextTimeOfLot(lotId: string, transaction?: Transaction): Promise
     { bind: { lotId }, type: QueryTypes.SELECT, transaction },
   );
 }
+
+/** Kinds of bottle that stand in a place. */
+export async function bottlesAt(placeId: string, transaction?: Transaction): Promise<string[]> {
+  const rows = await database().query<{ id: string }>('select lot_bottle_id as id from bottle_stands where place_id = $placeId', { bind: { placeId }, type: QueryTypes.SELECT, transaction });
+  return rows.map((row) => row.id);
+}
