@@ -183,6 +183,8 @@ export class Truths {
       case 'past peak':
         return this.peaks.some((one) => hour >= one.from - 1 && hour < one.to + 12 && (hour >= one.at - 6 || this.rate(hour) < 0.9 * this.rate(one.at)) && hour >= one.at - 24);
       case 'airlock ok': {
+        // Half a day of grace for sugar that has just gone in.
+        if (batch.finals.some((stretch) => stretch.from > 0 && hour >= stretch.from && hour < stretch.from + 12)) return true;
         for (let h = hour; h <= hour + 48; h += 1) {
           if (h > hour + 3 && batch.finals.some((stretch) => stretch.from > hour && stretch.from <= h)) return true;
           if (this.gas(h) > 1.15 * this.swap) return false;

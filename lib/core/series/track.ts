@@ -132,10 +132,13 @@ export class Track {
     return kept < 5 ? null : robustLine(lineT, lineG, 0, kept);
   }
 
-  /** What is still to fall after `to`, from the record since `from`; null when less than three quarters of it has data. */
-  tail(from: number, to: number): Tail | null {
+  /**
+   * What is still to fall after `to`, from the record since `from`, of a stretch that
+   * is `ageH` old; null when less than three quarters of it has data.
+   */
+  tail(from: number, to: number, ageH: number): Tail | null {
     const kept = this.gather(from, to, 0.75);
-    return kept < 10 ? null : fitTail(lineT, lineG, 0, kept > 60 ? thirds(kept) : kept, to, to / 24);
+    return kept < 10 ? null : fitTail(lineT, lineG, 0, kept > 60 ? thirds(kept) : kept, to, ageH / 24);
   }
 
   /** Copies the sound bins of [from, to) side by side; their number, or 0 when they cover too little. */
@@ -335,7 +338,7 @@ export class Track {
   /** Noise index at an hour: trimmed mean of the noise of its last hours, points; null with too little data. */
   noiseIndex(hour: number): number | null {
     const { bins } = this;
-    const span = this.spacing < 0.75 ? 8 : this.spacing < 1.5 ? 14 : 24;
+    const span = this.spacing < 0.75 ? 8 : this.spacing < 1.5 ? 14 : 18;
     const to = this.upTo(hour);
     let n = 0;
     for (let i = to - 1; i >= 0 && bins.hour[i]! >= hour - span; i -= 1) {

@@ -19,7 +19,7 @@ const TAIL_H = 6;
 export const TERMINAL_POINTS = 1.7;
 export const BOTTLE_POINTS = 1.0;
 /** Points that are likely still to come when it may be racked. */
-export const RACK_POINTS = 2.2;
+export const RACK_POINTS = 2.0;
 /** Share of fruit that is sugar where nobody says. Common practice. */
 const FRUIT_SUGAR = 0.1;
 
@@ -71,6 +71,8 @@ export class Watch {
   private maxRates = new Map<number, { rate: number; se: number }>();
   maxFittedRate = 0;
   baseline: number | null = null;
+  /** Lowest level of a quiet day in this segment, points: a ferment does not rise, a float that drifts does. */
+  private lowest: number | null = null;
   /** Level on which the batch came to rest, points. */
   plateau: number | null = null;
   private noise = 0.5;
@@ -146,6 +148,19 @@ export class Watch {
     return this.priorCache.prior;
   }
 
+  /** Level to hold against the yeast's range, points: now, unless the float has only climbed since. */
+  private groundLevel(): number | null {
+    const level = this.levelNow();
+    return level === null || this.lowest === null ? level : Math.min(level, this.lowest + 0.7);
+  }
+
+  private noteLowest(): void {
+    const line = this.line(24);
+    const level = this.levelNow();
+    if (!line || level === null || Math.abs(line.slope) > 2 || this.segment.fruit) return;
+    if (this.lowest === null || level < this.lowest) this.lowest = level;
+  }
+
   /** Highest gravity at which the batch may be done, points. */
   zoneTop(): number {
     const prior = this.fgPrior();
@@ -174,11 +189,21 @@ export class Watch {
   tail(): Tail | null {
     const now = Math.floor(this.lookedAt / TAIL_H + 1e-9) * TAIL_H;
     if (this.tailCache?.at !== now) {
-      const window = Math.max(72, Math.min(240, 0.25 * now));
-      const since = Math.max(now - window, this.segment.restarted ? this.segment.from + 24 : 0);
-      this.tailCache = { at: now, tail: now - since < 66 ? null : this.track.tail(since, now) };
+      const { from, restarted } = this.segment;
+      const age = restarted ? Math.max(72, now - from) : now;
+      const window = Math.max(72, Math.min(240, 0.25 * age));
+      const since = Math.max(now - window, restarted ? from + 24 : 0);
+      this.tailCache = { at: now, tail: now - since < 66 ? null : this.track.tail(since, now, age) };
     }
     return this.tailCache.tail;
+  }
+
+  /** The tail where the fall is near its end; null before. */
+  private tailNow(): Tail | null {
+    const level = this.levelNow();
+    const line = this.line(48);
+    const ending = level !== null && this.peaked.on && line !== null && -line.slope < 3 && level < this.zoneTop() + 10;
+    return ending ? this.tail() : null;
   }
 
   /**
@@ -189,9 +214,7 @@ export class Watch {
   remainingNow(): { value: number; sd: number } | null {
     const level = this.levelNow();
     if (level === null) return null;
-    const line = this.line(48);
-    const ending = this.peaked.on && line !== null && -line.slope < 3 && level < this.zoneTop() + 10;
-    const tail = ending ? this.tail() : null;
+    const tail = this.tailNow();
     if (!tail) {
       const fit = this.fit();
       return fit && { value: level - fit.parameters[1]!, sd: Math.hypot(fit.fgSd, 0.6) };
@@ -316,6 +339,7 @@ export class Watch {
     this.lastAdditionFruit = fruit;
     this.segment = { from: hour, effectiveOg, ogSd: Math.hypot(this.segment.ogSd, 1), level, fruit: fruit || this.segment.fruit, restarted: true };
     this.plateau = sweetened ? level : null;
+    this.lowest = null;
     this.maxRate = 0;
     this.maxRates.clear();
     this.maxFittedRate = 0;
@@ -346,6 +370,7 @@ export class Watch {
       const step = track.stepAt(hour);
       if (step !== null && Math.abs(step) > 0.4 && Math.abs(step) < 15) {
         track.shift(hour, step, 'racking');
+        this.lowest = null;
         this.lines.clear();
         this.fitCache = null;
         this.tailCache = null;
@@ -368,7 +393,10 @@ export class Watch {
     const step = track.findStep(this.lookedAt, quietFrom);
     if (step && !this.nearEvent(step.hour)) {
       if (step.points > 5.5) this.restart(step.hour, this.segment.effectiveOg + step.points, null, false);
-      else track.shift(step.hour, step.points, 'moved');
+      else {
+        track.shift(step.hour, step.points, 'moved');
+        this.lowest = null;
+      }
       this.lines.clear();
       this.fitCache = null;
       this.tailCache = null;
@@ -427,6 +455,7 @@ export class Watch {
     const hour = this.lookedAt;
     this.judgeStart(hour);
     if (this.started.on && !this.frozen) {
+      this.noteLowest();
       this.judgePeak(hour);
       this.judgeAirlock(hour);
       this.judgeEnd(hour);
@@ -477,7 +506,7 @@ export class Watch {
       const rate = -line.slope;
       const most = this.maxRates.get(window);
       if (rate > 1 && (!most || rate > most.rate)) this.maxRates.set(window, { rate, se: line.se });
-      else if (most && most.rate - rate > Math.max(0.07 * most.rate, 1.8 * Math.hypot(line.se, most.se))) below = true;
+      else if (most && most.rate - rate > Math.max(0.06 * most.rate, 1.6 * Math.hypot(line.se, most.se))) below = true;
       if (window === 24 && rate > this.maxRate) this.maxRate = rate;
     }
     let fitted = false;
@@ -512,7 +541,7 @@ export class Watch {
       const line = this.line(window);
       if (!line) continue;
       if (line.slope > 1.5) continue;
-      upper = Math.min(upper, gasLPerH(-line.slope + 1.64 * line.se, this.setup.volumeL));
+      upper = Math.min(upper, gasLPerH(-line.slope + 1.28 * line.se, this.setup.volumeL));
       if (window === 12 || lower === Number.NEGATIVE_INFINITY) lower = gasLPerH(-line.slope - 1.64 * line.se, this.setup.volumeL);
     }
     const limit = this.swapGas();
@@ -527,7 +556,8 @@ export class Watch {
     const line48 = this.line(48);
     const lower48 = line48 ? -line48.slope - 1.64 * line48.se : null;
     const upper48 = line48 ? -line48.slope + 1.64 * line48.se : null;
-    const inside = level !== null && level <= this.zoneTop() && this.peaked.on;
+    const ground = this.groundLevel();
+    const inside = ground !== null && ground <= this.zoneTop() && this.peaked.on;
     // The tail is only asked where the fall is slow enough for it to matter.
     const open = !this.terminal.on || !this.bottle.on;
     const slow = open && inside && upper48 !== null && upper48 < 1.2;
@@ -558,7 +588,7 @@ export class Watch {
   }
 
   private judgeStall(hour: number): void {
-    const level = this.levelNow();
+    const level = this.groundLevel();
     if (level === null) return;
     const prior = this.fgPrior();
     const limit = this.stuckFloor();
@@ -614,16 +644,19 @@ export class Watch {
     if (wasOn && !this.refermenting.on) this.plateau = level;
   }
 
-  /** Hours until the gravity is within a point of its end, from the curve; null without one. */
+  /** Hours until the gravity is within a point of its end: from the curve, near the end from the tail as well; null without either. */
   hoursToEnd(): number | null {
     const fit = this.fit();
-    if (!fit) return null;
+    const tail = this.tailNow();
+    const byTail = tail && (tail.likely <= 1 ? 0 : (24 * Math.log(tail.likely)) / tail.pace);
+    if (!fit) return byTail;
     const { curve } = fit;
     const drop = curve.og - curve.fg;
     if (drop <= 1) return 0;
-    const tauEnd = curve.tauOfShare(1 / drop);
     const tauNow = this.track.tauAt(this.lookedAt) - this.track.tauAt(this.segment.from);
-    return Math.max(0, ((tauEnd - tauNow) / this.track.warmthAt(this.lookedAt)) * 24);
+    const byCurve = Math.max(0, ((curve.tauOfShare(1 / drop) - tauNow) / this.track.warmthAt(this.lookedAt)) * 24);
+    // Spans of time spread evenly in their logarithm; half a day keeps it tame near nought.
+    return byTail === null ? byCurve : Math.sqrt((byCurve + 12) * (byTail + 12)) - 12;
   }
 
   /** Share of the whole expected fall that is done, 0 to 1. */
