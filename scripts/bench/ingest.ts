@@ -1,5 +1,5 @@
 import { execFile, spawn } from 'node:child_process';
-import { mkdtemp, rm } from 'node:fs/promises';
+import { mkdtemp, readFile, rm } from 'node:fs/promises';
 import { cpus, tmpdir } from 'node:os';
 import { join, resolve } from 'node:path';
 import { promisify } from 'node:util';
@@ -51,7 +51,12 @@ async function startServer(args: string[], variables: Record<string, string>, re
     child.once('exit', (code) => fail(new Error(`${args[0]} ended with ${code} before it was ready`)));
   });
   return {
-    memoryMb: async () => Number(/VmRSS:\s+(\d+)/.exec((await run('cat', [`/proc/${child.pid}/status`])).stdout)?.[1] ?? NaN) / 1024,
+    /** Processor time so far, s: fields 14 and 15 of proc(5), in ticks of 10 ms. It does not depend on what else runs. */
+    cpuSeconds: async () => {
+      const fields = (await readFile(`/proc/${child.pid}/stat`, 'utf8')).split(') ')[1]!.split(' ');
+      return (Number(fields[11]) + Number(fields[12])) / 100;
+    },
+    memoryMb: async () => Number(/VmRSS:\s+(\d+)/.exec(await readFile(`/proc/${child.pid}/status`, 'utf8'))?.[1] ?? NaN) / 1024,
     stop: () =>
       new Promise<void>((done) => {
         child.removeAllListeners('exit').once('exit', () => done());
@@ -112,29 +117,32 @@ async function main(): Promise<void> {
     const ours = await startServer(['broker/server.ts'], { DATABASE_URL: url, MQTT_PORT: String(ports.ours), LOG_LEVEL: 'info', NODE_ENV: 'production' }, 'broker ready');
     servers.push(ours);
 
+    const processes = { floor, ours };
+
     // Every run has a stretch of time of its own, so that only the doubles meant to be are doubles.
     let from = Date.parse('2020-01-01T00:00:00Z');
     const one = async (side: Side, mode: Mode) => {
+      const cpuBefore = await processes[side].cpuSeconds();
       const outcome = await publish({ port: ports[side], sensors, messages: mode.messages, inFlight: mode.inFlight, rate: mode.rate, doubleEvery: DOUBLE_EVERY, from });
       const { rows } = await sequelize.query(`select count(*)::int as n from ${side === 'ours' ? 'readings' : 'floor_readings'} where measured_at >= '${new Date(from).toISOString()}'`).then(([list]) => ({ rows: (list as Array<{ n: number }>)[0]!.n }));
       if (rows !== outcome.distinct) throw new Error(`${side}, ${mode.name}: ${outcome.distinct} distinct readings were acknowledged and ${rows} are in the table.`);
-      return outcome;
+      return { ...outcome, cpuMicros: (((await processes[side].cpuSeconds()) - cpuBefore) * 1e6) / mode.messages };
     };
 
     for (const side of ['floor', 'ours'] as const) await one(side, { name: 'warm-up', inFlight: 5, rate: 0, messages: MESSAGES });
     const result: Record<string, unknown> = {};
     for (const mode of MODES) {
-      const outcomes: Record<Side, Outcome[]> = { floor: [], ours: [] };
+      const outcomes: Record<Side, Array<Awaited<ReturnType<typeof one>>>> = { floor: [], ours: [] };
       for (let round = 0; round < ROUNDS; round += 1) {
         from += 30 * 86_400_000;
         for (const side of round % 2 === 0 ? (['floor', 'ours'] as const) : (['ours', 'floor'] as const)) outcomes[side].push(await one(side, mode));
       }
-      const figures = (side: Side) => ({ per_second: Math.round(median(outcomes[side].map((item) => item.perSecond))), p50_ms: round2(median(outcomes[side].map((item) => item.p50))), p99_ms: round2(median(outcomes[side].map((item) => item.p99))) });
+      const figures = (side: Side) => ({ per_second: Math.round(median(outcomes[side].map((item) => item.perSecond))), p50_ms: round2(median(outcomes[side].map((item) => item.p50))), p99_ms: round2(median(outcomes[side].map((item) => item.p99))), cpu_us: Math.round(median(outcomes[side].map((item) => item.cpuMicros))) });
       const [f, o] = [figures('floor'), figures('ours')];
       const ratio = median(outcomes.ours.map((item, index) => item.perSecond / outcomes.floor[index]!.perSecond));
       const p99Ratio = median(outcomes.ours.map((item, index) => item.p99 / outcomes.floor[index]!.p99));
       result[mode.name] = { floor: f, ours: o, ratio: round2(ratio), p99_ratio: round2(p99Ratio) };
-      console.log(`${mode.name.padEnd(24)} floor ${String(f.per_second).padStart(6)}/s p50 ${f.p50_ms} p99 ${f.p99_ms} ms   ours ${String(o.per_second).padStart(6)}/s p50 ${o.p50_ms} p99 ${o.p99_ms} ms   ratio ${round2(ratio)}`);
+      console.log(`${mode.name.padEnd(24)} floor ${String(f.per_second).padStart(6)}/s p50 ${f.p50_ms} p99 ${f.p99_ms} ms ${f.cpu_us} µs   ours ${String(o.per_second).padStart(6)}/s p50 ${o.p50_ms} p99 ${o.p99_ms} ms ${o.cpu_us} µs   ratio ${round2(ratio)}`);
     }
     const inserts: number[] = [];
     for (let round = 0; round < 3; round += 1) inserts.push(await plainInsert(url, Date.parse('2019-01-01T00:00:00Z') + round * 30 * 86_400_000));
