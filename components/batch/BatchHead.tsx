@@ -19,9 +19,9 @@ function Facts({ facts, phone }: { facts: readonly Fact[]; phone: boolean }) {
   const order = phone ? ['now', 'last known', 'attenuation', 'strength so far', 'original gravity'] : shown.map((fact) => fact.name);
   const ordered = order.flatMap((name) => shown.find((fact) => fact.name === name) ?? []);
   return (
-    <dl className={phone ? 'grid grid-cols-4 border-b' : 'mt-[14px] flex flex-wrap border-t'}>
+    <dl className={phone ? 'grid grid-cols-4 border-b' : 'mt-[14px] grid grid-cols-4 border-t wide:flex'}>
       {ordered.map((fact, index) => (
-        <div key={fact.name} className={phone ? `border-rule py-2 ${index === 0 ? 'pl-(--margin)' : 'border-l pl-2'}` : `flex-auto py-2 pr-3 ${index === 0 ? '' : 'border-l pl-3'}`}>
+        <div key={fact.name} className={phone ? `border-rule py-2 ${index === 0 ? 'pl-(--margin)' : 'border-l pl-2'}` : `flex-auto py-2 pr-3 ${index === 0 ? '' : index % 4 === 0 ? 'wide:border-l wide:pl-3' : 'border-l pl-3'}`}>
           <dt className="type-label truncate text-[0.71875rem] text-ink2">{names[fact.name] ?? fact.name}</dt>
           <dd className="whitespace-nowrap font-mono text-[0.96875rem] font-semibold leading-5">
             {fact.figure}
@@ -73,7 +73,7 @@ export function PhoneHead({ batch, meta, onSetup }: { batch: BatchBody; meta: re
       <p className="type-sub min-w-0 flex-1 truncate" role="heading" aria-level={1}>
         {batch.name}
       </p>
-      <div className="type-label shrink-0 text-right text-ink2" style={{ lineHeight: '1rem' }}>
+      <div className="type-label shrink-0 text-right text-ink2 max-[359px]:hidden" style={{ lineHeight: '1rem' }}>
         {meta.map((line) => (
           <div key={line}>{line}</div>
         ))}

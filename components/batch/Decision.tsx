@@ -44,9 +44,9 @@ export function Decision({ row, vessel, when, done, onRead, mayTake }: DecisionP
         </div>
       </div>
       {(done || onRead || (row.alert && mayTake)) && (
-        <div className="mt-3 flex justify-end gap-2 [&>*]:flex-1">
+        <div className="mt-3 flex flex-wrap justify-end gap-2 [&>*]:flex-1">
           {row.alert && mayTake && <TakeIt alert={row.alert} />}
-          {onRead && (
+          {onRead && !(done && row.alert) && (
             <Button look={done || row.alert ? 'plain' : 'first'} onClick={onRead}>
               Read by hand
             </Button>

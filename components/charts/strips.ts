@@ -51,10 +51,21 @@ export function roundSteps(min: number, max: number, count: number): number[] {
 const POINT = 0.001;
 const known = (values: readonly (number | null | undefined)[]): number[] => values.filter((value): value is number => typeof value === 'number' && Number.isFinite(value));
 
+/**
+ * The highest reading that still says something of the fall. Single ones above
+ * it are bubbles; they are drawn as far as the room over the ceiling goes.
+ */
+function ceilingOf(readings: readonly number[]): number {
+  const sorted = [...readings].sort((a, b) => a - b);
+  return sorted[Math.floor((sorted.length - 1) * 0.97)] ?? -Infinity;
+}
+
 /** Floor and ceiling of the fall: the bed and the original gravity, widened by what lies outside them. */
 function gravitySpan(picture: Picture, page: boolean): { min: number; max: number } {
-  const seen = known([...picture.readings.gravity, ...picture.rings.map((ring) => ring.gravity), ...picture.curve.map((point) => (page ? point.hi : point.gravity))]);
-  const top = Math.max(...seen, picture.originalGravity ?? -Infinity, (picture.bed?.value ?? -Infinity) + 10 * POINT);
+  const readings = known(picture.readings.gravity);
+  const marked = known([...picture.rings.map((ring) => ring.gravity), ...picture.curve.map((point) => (page ? point.hi : point.gravity))]);
+  const seen = [...readings, ...marked];
+  const top = Math.max(ceilingOf(readings), ...marked, picture.originalGravity ?? -Infinity, (picture.bed?.value ?? -Infinity) + 10 * POINT);
   const lowest = Math.min(...seen, picture.originalGravity ?? Infinity);
   const floor = picture.bed?.value ?? lowest - 2 * POINT;
   if (!Number.isFinite(top)) return { min: 1, max: 1.06 };

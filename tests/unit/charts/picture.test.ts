@@ -101,6 +101,12 @@ describe('the strips', () => {
     expect(gravity.max - gravity.min).toBeCloseTo(0.01, 9);
   });
 
+  it('are not pressed flat by a few readings that a bubble lifted', () => {
+    const gravity = Array.from({ length: 100 }, (_, index) => (index === 40 ? 1.12 : 1.06 - index * 0.0003));
+    const { max } = layOut(picture({ readings: { at: gravity.map((_, index) => NOW - index), gravity, temperature: gravity.map(() => null) } }), 'page').gravity;
+    expect(max).toBe(1.06);
+  });
+
   it('have finite ends before there is any reading', () => {
     const { gravity, temperature } = layOut(picture({ originalGravity: null, bed: null, range: null }), 'page');
     expect(Number.isFinite(gravity.min) && gravity.max > gravity.min).toBe(true);
