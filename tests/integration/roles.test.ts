@@ -8,68 +8,16 @@ import type { Role } from '@/lib/core/roles';
 import type { Call } from '@/lib/core/types';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildCellar, buildEntry, buildMember, buildSensor } from '../support/factories';
+import { EVERYBODY, SHELF_SPAN, watchRows, type RoleRow, type Things } from '../support/role-rows';
 import { call, sessionCookie, startWeb, type Web } from '../support/web';
 
 const ROUTES = join(import.meta.dirname, '../../app/api/v1');
 
-type Who = Role | 'nobody';
-const EVERYBODY: Who[] = ['keeper', 'brewer', 'hand', 'guest'];
-const NOT_GUESTS: Who[] = ['keeper', 'brewer', 'hand'];
-const BREWERS: Who[] = ['keeper', 'brewer'];
+/** A part of the API that brings routes brings its rows: name them here. */
+const TABLE: Partial<Record<EndpointName, RoleRow>> = { ...watchRows };
 
-/** One cellar's things, fresh for each request, so that one request does not decide the next. */
-interface Things {
-  batchId: string;
-  entryId: string;
-  sensorId: string;
-  alertId: string;
-  signInId: string;
-  cellarId: string;
-}
-
-interface Row {
-  /** Who may, with things of their own cellar; all others get 403, and nobody 401. */
-  may: readonly Who[];
-  /** What a good request answers. */
-  good: number;
-  /** Names a thing of a cellar: with another cellar's it is 404 for all who may. */
-  names?: boolean;
-  path(things: Things): string;
-  body?(things: Things): unknown;
-}
-
-const span = 'from=2026-03-01T00:00:00Z&to=2026-03-02T00:00:00Z';
-
-/** Written out by hand on purpose: it says what the policies should be, and is not made from them. */
-const TABLE: Record<Exclude<EndpointName, 'postTelemetry' | 'getOpenApi' | 'streamEvents'>, Row> = {
-  getMe: { may: EVERYBODY, good: 200, path: () => '/me' },
-  listSignIns: { may: EVERYBODY, good: 200, path: () => '/sign-ins' },
-  endAllSignIns: { may: EVERYBODY, good: 204, path: () => '/sign-ins' },
-  endSignIn: { may: EVERYBODY, good: 204, names: true, path: (t) => `/sign-ins/${t.signInId}` },
-  listMembers: { may: EVERYBODY, good: 200, path: () => '/members' },
-  chooseCellar: { may: EVERYBODY, good: 204, names: true, path: () => '/cellars/active', body: (t) => ({ cellar_id: t.cellarId }) },
-  getShelf: { may: EVERYBODY, good: 200, path: () => `/shelf?${span}` },
-  listBatches: { may: EVERYBODY, good: 200, path: () => '/batches' },
-  createBatch: { may: BREWERS, good: 201, path: () => '/batches', body: () => ({ name: 'Perry', kind: 'cider', volume_l: 4, vessel_l: 5 }) },
-  getBatch: { may: EVERYBODY, good: 200, names: true, path: (t) => `/batches/${t.batchId}` },
-  updateBatch: { may: BREWERS, good: 200, names: true, path: (t) => `/batches/${t.batchId}`, body: () => ({ name: 'Renamed' }) },
-  getSeries: { may: EVERYBODY, good: 200, names: true, path: (t) => `/batches/${t.batchId}/series` },
-  getAssessment: { may: EVERYBODY, good: 200, names: true, path: (t) => `/batches/${t.batchId}/assessment` },
-  getJudgement: { may: EVERYBODY, good: 200, names: true, path: (t) => `/batches/${t.batchId}/judgement` },
-  listVerdictChanges: { may: EVERYBODY, good: 200, names: true, path: (t) => `/batches/${t.batchId}/assessments` },
-  listEntries: { may: EVERYBODY, good: 200, names: true, path: (t) => `/batches/${t.batchId}/entries` },
-  createEntry: { may: NOT_GUESTS, good: 201, names: true, path: (t) => `/batches/${t.batchId}/entries`, body: () => ({ kind: 'note', at: '2026-03-01T00:00:00Z', text: 'Smells clean.' }) },
-  // The entry is somebody else's: a hand may take back only an own one (403 by the service, tested below).
-  removeEntry: { may: BREWERS, good: 204, names: true, path: (t) => `/batches/${t.batchId}/entries/${t.entryId}` },
-  listSensors: { may: NOT_GUESTS, good: 200, path: () => '/sensors' },
-  createSensor: { may: ['keeper'], good: 201, path: () => '/sensors', body: () => ({ name: 'Float' }) },
-  getSensor: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/sensors/${t.sensorId}` },
-  updateSensor: { may: BREWERS, good: 200, names: true, path: (t) => `/sensors/${t.sensorId}`, body: () => ({ batch_id: null }) },
-  listRefusals: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/sensors/${t.sensorId}/refusals` },
-  listAlerts: { may: NOT_GUESTS, good: 200, path: () => '/alerts' },
-  acknowledgeAlert: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/alerts/${t.alertId}/acknowledge`, body: () => ({}) },
-  resolveAlert: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/alerts/${t.alertId}/resolve`, body: () => ({}) },
-};
+/** Tested where they are at home: by a sensor's credential, in the open, as a stream. */
+const ELSEWHERE = new Set<string>(['postTelemetry', 'getOpenApi', 'streamEvents'] satisfies EndpointName[]);
 
 const EVIDENCE: Call = { verdict: 'yes', kind: 'stuck', since: 0, expectedAt: null, headline: 'Warm it.', reason: 'No fall.', act: null, changesIt: null, evidence: [] };
 
@@ -93,21 +41,26 @@ describe('who may do what', () => {
     await web?.stop();
   });
 
+  /** `GET /batches/{id}`, for each method of each route file. */
+  const routes = () =>
+    readdirSync(ROUTES, { recursive: true, encoding: 'utf8' })
+      .filter((file) => file.endsWith('/route.ts'))
+      .flatMap((file) => {
+        const path = `/${file.slice(0, -'/route.ts'.length)}`.replace(/\[(\w+)\]/g, '{$1}');
+        const methods = [...readFileSync(join(ROUTES, file), 'utf8').matchAll(/export (?:const|async function|function) (GET|POST|PUT|PATCH|DELETE)\b/g)].map((match) => match[1]!);
+        expect(methods.length, file).toBeGreaterThan(0);
+        return methods.map((method) => `${method} ${path}`);
+      });
+  const named = Object.entries(endpoints).map(([name, endpoint]) => ({ name, call: `${endpoint.method} ${endpoint.path}` }));
+
   it('has a row in the table for every route and method there is', () => {
-    const inTable = new Set<string>();
-    for (const endpoint of Object.values(endpoints)) inTable.add(`${endpoint.method} ${endpoint.path}`);
-    const inFolders = readdirSync(ROUTES, { recursive: true, encoding: 'utf8' }).filter((file) => file.endsWith('/route.ts')).flatMap((file) => {
-      const path = `/${file.slice(0, -'/route.ts'.length)}`.replace(/\[(\w+)\]/g, '{$1}');
-      const methods = [...readFileSync(join(ROUTES, file), 'utf8').matchAll(/export (?:const|async function|function) (GET|POST|PUT|PATCH|DELETE)\b/g)].map((match) => match[1]!);
-      expect(methods.length, file).toBeGreaterThan(0);
-      return methods.map((method) => `${method} ${path}`);
-    });
-    expect([...inTable].sort()).toEqual(inFolders.sort());
-    expect(Object.keys(TABLE).sort()).toEqual(
-      Object.keys(endpoints)
-        .filter((name) => !['postTelemetry', 'getOpenApi', 'streamEvents'].includes(name))
-        .sort(),
-    );
+    const rows = new Set(named.filter(({ name }) => name in TABLE || ELSEWHERE.has(name)).map(({ call: key }) => key));
+    expect(routes().filter((key) => !rows.has(key))).toEqual([]);
+  });
+
+  it('has a route for every endpoint that the API describes', () => {
+    const there = new Set(routes());
+    expect(named.filter(({ call: key }) => !there.has(key)).map(({ call: key }) => key)).toEqual([]);
   });
 
   for (const [name, row] of Object.entries(TABLE)) {
@@ -141,7 +94,7 @@ describe('who may do what', () => {
     await things(mine.cellarId, mine.personId);
     const foreign = await things(theirs.cellarId, theirs.personId);
     const { cookie } = await sessionCookie(mine.personId);
-    for (const path of ['/batches', '/sensors', '/alerts', '/members', `/shelf?${span}`]) {
+    for (const path of ['/batches', '/sensors', '/alerts', '/members', `/shelf?${SHELF_SPAN}`]) {
       const answer = await call(web, 'GET', `/api/v1${path}`, { cookie });
       expect(answer.status).toBe(200);
       const text = JSON.stringify(answer.body);
