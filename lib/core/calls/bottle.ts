@@ -23,7 +23,7 @@ export function bottleCall(scene: Scene): Call {
     ...(rate ? [evidence('fall', rate.value, 0.25, 'points/d')] : []),
     ...(worst === null ? [] : [evidence('worst extra carbonation', worst, 1, 'volumes')]),
   ];
-  const changesIt = `Changes it: ${gravityWords(top)} or less and no fall for ${Math.round(Math.max(72, Math.min(168, 0.2 * watch.age)))} h.`;
+  const changesIt = `Changes it: ${gravityWords(top)} or less and no fall for ${Math.round(Math.max(72, Math.min(168, 0.2 * watch.lookedAt)))} h.`;
   if (watch.refermenting.on) {
     const fallen = level !== null && watch.plateau !== null ? pointsWords(watch.plateau - level) : 'More than 1.5 points';
     return call('hold', 'Do not bottle: it works again.', `${fallen} below where it had come to rest.`, {

@@ -22,7 +22,7 @@ export function rackCall(scene: Scene): Call {
   if (watch.frozen || scene.silent || level === null) return call('unknown', 'Not known.', 'The sensor gives nothing to go by.', { act: 'Read by hand.', changesIt });
   const hours = hoursToRack(scene);
   const expectedAt = hours === null ? null : later(scene, hours);
-  const left = watch.remaining();
+  const left = (watch.remainingNow()?.value ?? null);
   if (hours !== null && expectedAt !== null && hours <= 72 && watch.peaked.on && watch.progress() > 0.65) {
     return call('soon', `Racking: from about ${when(scene, expectedAt)}.`, `${gravityWords(level)} now${left === null ? '' : `, ${pointsWords(Math.max(0, left))} to go`}.`, { expectedAt, evidence: figures, changesIt });
   }

@@ -29,3 +29,10 @@ export function hold(state: Latch, hour: number, condition: boolean, times: numb
     state.since = hour;
   }
 }
+
+/** Forgets it: a new stretch has begun. */
+export function clear(one: Latch): void {
+  one.on = false;
+  one.since = null;
+  one.run = 0;
+}

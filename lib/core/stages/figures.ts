@@ -1,0 +1,313 @@
+import type { BatchSetup, Instant, Neck } from '../types';
+import type { CurveFit } from '../fit/map';
+import { finalGravityPrior, type Normal } from '../fit/priors';
+import { gasLPerH, swapGasLPerH } from '../gas/gas';
+import type { Line } from '../series/line';
+import type { Tail } from '../series/tail';
+import { Track, type Segment } from '../series/track';
+import { pointsOf } from '../units/convert';
+import { fitSegment } from './curve';
+import { latch } from './latch';
+
+/** Hours between two views of the tail, which hardly changes from look to look. */
+const TAIL_H = 6;
+
+/** A float whose readings have all but stopped flickering. */
+export interface FrozenState {
+  since: number;
+  /** Noise now and as usual, points. */
+  index: number;
+  usual: number;
+}
+
+/**
+ * The state of one batch at its last look, and the figures that the rules and the
+ * calls are made of. Each figure is worked out at most once a look, from what was
+ * measured before it.
+ */
+export class Figures {
+  readonly track: Track;
+  segment: Segment;
+  /** Original gravity as told, or as the float showed it before anything happened, points. */
+  og: number | null;
+  ogSd: number;
+  readonly ogTold: boolean;
+  /** Hour of the last look. */
+  lookedAt = 0;
+
+  neck: Neck | null;
+  neckSince: number | null = null;
+  stabilised = false;
+  lastAddition: number | null = null;
+  protected lastAdditionFruit = false;
+  /** Sugar went in after the batch had come to rest. */
+  sweetened = false;
+  readonly handReadings: { hour: number; points: number }[] = [];
+  lastHand: { hour: number; points: number; miss: number } | null = null;
+  frozen: FrozenState | null = null;
+
+  readonly started = latch();
+  readonly overdue = latch();
+  readonly peaked = latch();
+  readonly airlock = latch();
+  readonly sluggish = latch();
+  readonly stuck = latch();
+  readonly terminal = latch();
+  readonly rack = latch();
+  readonly bottle = latch();
+  readonly refermenting = latch();
+  readonly rising = latch();
+  readonly drifting = latch();
+  stuckCold = false;
+
+  /** Highest rate over a day so far in this segment, points a day. */
+  maxRate = 0;
+  /** Level before anything happened, as the float showed it, points. */
+  baseline: number | null = null;
+  /** Lowest level of a quiet day in this segment, points: a ferment does not rise, a float that drifts does. */
+  protected lowest: number | null = null;
+  /** Level on which the batch came to rest, points. */
+  plateau: number | null = null;
+
+  private readonly lines = new Map<number, Line | null>();
+  private levelMemo: number | null | undefined;
+  private remainingMemo: { value: number; sd: number } | null | undefined;
+  private fitCache: { key: number; fit: CurveFit | null } | null = null;
+  private tailCache: { at: number; tail: Tail | null } | null = null;
+  private priorCache: { segment: Segment; prior: Normal } | null = null;
+
+  constructor(
+    readonly setup: BatchSetup,
+    origin: Instant,
+  ) {
+    this.track = new Track(setup, origin);
+    this.og = setup.originalGravity === null ? null : pointsOf(setup.originalGravity);
+    this.ogTold = this.og !== null;
+    this.ogSd = this.ogTold ? 1 : 3;
+    this.neck = setup.neck ?? null;
+    this.segment = { from: 0, effectiveOg: this.og ?? 0, ogSd: this.ogSd, level: this.og, fruit: false, restarted: false };
+  }
+
+  /** Hour since which the temperature has been out of its range without a break. */
+  outsideSince(side: 'low' | 'high'): number | null {
+    const range = this.setup.temperature;
+    if (!range) return null;
+    const { bins } = this.track;
+    let since: number | null = null;
+    for (let i = this.track.upTo(this.lookedAt) - 1; i >= 0; i -= 1) {
+      const t = bins.temperature[i]!;
+      if (side === 'low' ? t >= range.minC : t <= range.maxC) break;
+      since = bins.t[i]!;
+    }
+    return since;
+  }
+
+  line(window: number): Line | null {
+    if (this.lines.has(window)) return this.lines.get(window)!;
+    const from = Math.max(this.lookedAt - window, this.segment.restarted ? this.segment.from + 1 : -48);
+    const line = this.lookedAt - from < 0.6 * window ? null : this.track.line(from, this.lookedAt);
+    this.lines.set(window, line);
+    return line;
+  }
+
+  /** Calibrated level now, points: the day's line at its end where the day is quiet, else the last six hours. */
+  levelNow(): number | null {
+    if (this.levelMemo === undefined) this.levelMemo = this.measureLevel();
+    return this.levelMemo;
+  }
+
+  /** Drops the figures of the look before: the hour, the record or the set-up has changed. */
+  protected forget(): void {
+    this.lines.clear();
+    this.levelMemo = undefined;
+    this.remainingMemo = undefined;
+  }
+
+  /** The record itself was changed: what was fitted to it no longer holds. */
+  protected recordChanged(): void {
+    this.fitCache = null;
+    this.tailCache = null;
+    this.forget();
+  }
+
+  private measureLevel(): number | null {
+    const line = this.line(24);
+    if (line && Math.abs(line.slope) < 6) return this.track.calibrate(line.level + (line.slope / 24) * (this.lookedAt - line.middle));
+    const raw = this.track.level(this.lookedAt - 6, this.lookedAt);
+    return raw === null ? null : this.track.calibrate(raw);
+  }
+
+  fgPrior(): Normal {
+    const { segment } = this;
+    // The segment is replaced whenever it changes, so it is its own key.
+    if (this.priorCache?.segment !== segment) {
+      this.priorCache = { segment, prior: finalGravityPrior(this.setup, segment.effectiveOg, segment.ogSd, segment.fruit) };
+    }
+    return this.priorCache.prior;
+  }
+
+  /** Level to hold against the yeast's range, points: now, unless the float has only climbed since. */
+  protected groundLevel(): number | null {
+    const level = this.levelNow();
+    return level === null || this.lowest === null ? level : Math.min(level, this.lowest + 0.7);
+  }
+
+  /** Highest gravity at which the batch may be done, points. */
+  zoneTop(): number {
+    const prior = this.fgPrior();
+    return prior.mean + Math.max(1.6 * Math.hypot(prior.sd, this.track.calibrationSd(prior.mean)), 3);
+  }
+
+  /** Lowest gravity at which a batch that rests may be called stuck, points; between the two it is not known. */
+  stuckFloor(): number {
+    return Math.max(this.zoneTop() + 1.5, this.fgPrior().mean + 5.5);
+  }
+
+  /** The fitted curve; anew every 6 h to day 10, every 12 h to day 30, then once a day. */
+  fit(): CurveFit | null {
+    const step = this.lookedAt < 240 ? 6 : this.lookedAt < 720 ? 12 : 24;
+    const at = Math.floor(this.lookedAt / step + 1e-9) * step;
+    if (this.fitCache && this.fitCache.key === at) return this.fitCache.fit;
+    const { segment } = this;
+    if (segment.effectiveOg < 5) return null;
+    const og: Normal = { mean: segment.level ?? segment.effectiveOg, sd: segment.restarted ? 2 : this.ogSd };
+    const fit = fitSegment(this.setup, this.track, segment, at, this.fgPrior(), og);
+    this.fitCache = { key: at, fit };
+    return fit;
+  }
+
+  /** What is still to come by the end of the record alone: a quarter of the age, at least 3 and at most 10 days of it. */
+  tail(): Tail | null {
+    const now = Math.floor(this.lookedAt / TAIL_H + 1e-9) * TAIL_H;
+    if (this.tailCache?.at !== now) {
+      const { from, restarted } = this.segment;
+      const age = restarted ? Math.max(72, now - from) : now;
+      const window = Math.max(72, Math.min(240, 0.25 * age));
+      const since = Math.max(now - window, restarted ? from + 24 : 0);
+      this.tailCache = { at: now, tail: now - since < 66 ? null : this.track.tail(since, now, age) };
+    }
+    return this.tailCache.tail;
+  }
+
+  /** The tail where the fall is near its end; null before. */
+  private tailNow(): Tail | null {
+    const level = this.levelNow();
+    const line = this.line(48);
+    const ending = level !== null && this.peaked.on && line !== null && -line.slope < 3 && level < this.zoneTop() + 10;
+    return ending ? this.tail() : null;
+  }
+
+  /**
+   * Points still to fall, and how well that is known: near the end what the tail
+   * shows, held against what the yeast's range leaves to be had; before that the
+   * curve. The range counts little where the tail is clear.
+   */
+  remainingNow(): { value: number; sd: number } | null {
+    if (this.remainingMemo === undefined) this.remainingMemo = this.weighRemaining();
+    return this.remainingMemo;
+  }
+
+  private weighRemaining(): { value: number; sd: number } | null {
+    const level = this.levelNow();
+    if (level === null) return null;
+    const tail = this.tailNow();
+    if (!tail) {
+      const fit = this.fit();
+      return fit && { value: level - fit.parameters[1]!, sd: Math.hypot(fit.fgSd, 0.6) };
+    }
+    const prior = this.fgPrior();
+    return held(
+      { value: tail.remaining, sd: Math.hypot(tail.sd, 0.2) },
+      { value: level - prior.mean, sd: Math.hypot(prior.sd, this.track.calibrationSd(level)) },
+    );
+  }
+
+  /** Expected final gravity, points. */
+  expectedFg(): number | null {
+    const left = this.remainingNow();
+    const level = this.levelNow();
+    return left === null || level === null ? null : level - left.value;
+  }
+
+  /** Hours until the gravity is within a point of its end: from the curve, near the end from the tail as well; null without either. */
+  hoursToEnd(): number | null {
+    const fit = this.fit();
+    const tail = this.tailNow();
+    const byTail = tail && (tail.likely <= 1 ? 0 : (24 * Math.log(tail.likely)) / tail.pace);
+    if (!fit) return byTail;
+    const { curve } = fit;
+    const drop = curve.og - curve.fg;
+    if (drop <= 1) return 0;
+    const tauNow = this.track.tauAt(this.lookedAt) - this.track.tauAt(this.segment.from);
+    const byCurve = Math.max(0, ((curve.tauOfShare(1 / drop) - tauNow) / this.track.warmthAt(this.lookedAt)) * 24);
+    // Spans of time spread evenly in their logarithm; half a day keeps it tame near nought.
+    return byTail === null ? byCurve : Math.sqrt((byCurve + 12) * (byTail + 12)) - 12;
+  }
+
+  /** Share of the whole expected fall that is done, 0 to 1. */
+  progress(level = this.levelNow()): number {
+    const fg = this.expectedFg() ?? this.fgPrior().mean;
+    const { effectiveOg } = this.segment;
+    if (level === null || effectiveOg - fg < 1) return 0;
+    return Math.min(1, Math.max(0, (effectiveOg - level) / (effectiveOg - fg)));
+  }
+
+  /** Present fall, points a day: the shortest window that is sharp enough, blended with the curve. */
+  rateNow(): { value: number; sd: number } | null {
+    let chosen: Line | null = null;
+    for (const window of [8, 12, 24, 48, 72]) {
+      const line = this.line(window);
+      if (!line) continue;
+      chosen = line;
+      if (line.se <= Math.max(0.5, 0.15 * Math.abs(line.slope))) break;
+    }
+    if (!chosen) return null;
+    const fit = this.started.on && !this.stuck.on ? this.fit() : null;
+    if (!fit) return { value: -chosen.slope, sd: chosen.se };
+    const start = this.track.tauAt(this.segment.from);
+    const pace = (hour: number): number => fit.curve.rate(this.track.tauAt(hour) - start) * this.track.warmthAt(hour);
+    const curved = pace(this.lookedAt);
+    // A line tells the pace of its middle; the curve tells how that has changed since.
+    const change = curved - pace(chosen.middle);
+    const rate = -chosen.slope + change;
+    return held({ value: rate, sd: Math.hypot(chosen.se, 0.12 * rate, 0.5 * change) }, { value: curved, sd: 0.25 * curved + 0.3 });
+  }
+
+  quietSinceAddition(hours: number, fruitHours: number): boolean {
+    if (this.lastAddition === null) return true;
+    return this.lookedAt - this.lastAddition > (this.lastAdditionFruit ? fruitHours : hours);
+  }
+
+  /** Drop since the pitch, points; null before there is a baseline. */
+  dropSoFar(): number | null {
+    const now = this.track.level(this.lookedAt - 6, this.lookedAt);
+    return now === null || this.baseline === null ? null : this.baseline - now;
+  }
+
+  swapGas(): number {
+    return swapGasLPerH(this.setup.kind, this.setup.volumeL, this.setup.vesselL);
+  }
+
+  /** Gas, L/h, if a cold vessel were warm again: its best pace in the measure of what is left. */
+  protected gasIfWarmed(): number {
+    const level = this.levelNow();
+    const { mean } = this.fgPrior();
+    const whole = this.segment.effectiveOg - mean;
+    return level === null || whole <= 0 ? 0 : gasLPerH((this.maxRate * (level - mean)) / whole, this.setup.volumeL);
+  }
+
+  coldNow(): boolean {
+    const now = this.track.temperature(this.lookedAt - 12, this.lookedAt);
+    if (now === null) return false;
+    if (this.setup.temperature && now < this.setup.temperature.minC - 0.4) return true;
+    const before = this.track.temperature(this.lookedAt - 96, this.lookedAt - 48);
+    return before !== null && before - now > 4;
+  }
+}
+
+/** Two independent estimates as one, weighted by their variances. */
+function held(a: { value: number; sd: number }, b: { value: number; sd: number }): { value: number; sd: number } {
+  const wa = 1 / a.sd ** 2;
+  const wb = 1 / b.sd ** 2;
+  return { value: (wa * a.value + wb * b.value) / (wa + wb), sd: Math.sqrt(1 / (wa + wb)) };
+}
