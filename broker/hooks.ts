@@ -2,6 +2,7 @@ import type { AedesOptions, AuthenticateError, Client, ConnectPacket } from 'aed
 import type { Socket } from 'node:net';
 import { RateLimiterMemory } from 'rate-limiter-flexible';
 import { hashSensorSecret, revokedSensors, type SensorDirectory, type SensorIdentity } from '@/lib/auth/sensors';
+import { systemClock, type Clock } from '@/lib/clock';
 import { readingsTopic, settingsTopic } from '@/lib/contracts/topics';
 import { logFor } from '@/lib/log';
 import { RETAINED, type Ingest } from './ingest';
@@ -43,7 +44,10 @@ export class Hooks {
   private readonly wrongFromAddress = new RateLimiterMemory({ points: WRONG_FROM_AN_ADDRESS, duration: 60 });
   private readonly strayKept = new RateLimiterMemory({ points: 1, duration: 60 });
 
-  constructor(private readonly parts: HookParts) {}
+  constructor(
+    private readonly parts: HookParts,
+    private readonly clock: Clock = systemClock,
+  ) {}
 
   get sensorsConnected(): number {
     return new Set([...this.signedIn.values()].map((entry) => entry.identity.id)).size;
@@ -76,7 +80,7 @@ export class Hooks {
         const refusedBecause = packet.retain ? RETAINED : undefined;
         packet.retain = false;
         // The library acknowledges when this is called back: after COMMIT.
-        this.parts.ingest.accept({ sensor, road: 'mqtt', body, ...(refusedBecause ? { refusedBecause } : {}) }, () => callback(null));
+        this.parts.ingest.accept({ sensor, road: 'mqtt', body, arrivedAt: this.clock.now(), refusedBecause }, () => callback(null));
       },
       authorizeSubscribe: (client, subscription, callback) => {
         const known = this.signedIn.get(client);
@@ -153,7 +157,7 @@ export class Hooks {
   /** Once a minute for each sensor: enough for its page to say what is wrong. */
   private keepStray(sensor: SensorIdentity, body: Buffer): void {
     this.strayKept.consume(sensor.id).then(
-      () => this.parts.ingest.accept({ sensor, road: 'mqtt', body, refusedBecause: `it was sent to another topic than ${readingsTopic(sensor.identifier)}` }, () => undefined),
+      () => this.parts.ingest.accept({ sensor, road: 'mqtt', body, arrivedAt: this.clock.now(), refusedBecause: `it was sent to another topic than ${readingsTopic(sensor.identifier)}` }, () => undefined),
       () => undefined,
     );
   }

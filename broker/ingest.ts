@@ -67,10 +67,10 @@ export class Ingest {
   }
 
   /** Takes a message; `committed` is called once it is on disk, as a reading or as refused. */
-  accept(message: Omit<Message, 'arrivedAt'>, committed: () => void): void {
+  accept(message: Message, committed: () => void): void {
     if (this.stopped.signal.aborted) return;
     const lane = (message.sensor?.id ?? 0) % this.lanes.length;
-    this.lanes[lane]!.push({ message: { ...message, arrivedAt: this.clock.now() }, committed });
+    this.lanes[lane]!.push({ message, committed });
     this.waitingMessages += 1;
     this.waitingBytes += message.body.length;
     this.signalFull();

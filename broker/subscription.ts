@@ -1,6 +1,7 @@
 import mqtt, { type IClientOptions, type MqttClient } from 'mqtt';
 import { setTimeout as pause } from 'node:timers/promises';
 import { SensorDirectory } from '@/lib/auth/sensors';
+import { systemClock } from '@/lib/clock';
 import { ALL_READINGS, sensorOfTopic } from '@/lib/contracts/topics';
 import { logFor } from '@/lib/log';
 import type { Message, Recorded } from '@/lib/services/readings/record';
@@ -133,7 +134,7 @@ export class OutsideBroker implements Subscription {
       try {
         const known = identifier ? await this.directory.byIdentifier(identifier) : null;
         const refusedBecause = known?.disabled ? 'the sensor is switched off' : retained ? RETAINED : undefined;
-        this.ingest.accept({ sensor: known?.identity ?? null, road: 'mqtt', body, ...(refusedBecause ? { refusedBecause } : {}) }, committed);
+        this.ingest.accept({ sensor: known?.identity ?? null, road: 'mqtt', body, arrivedAt: systemClock.now(), refusedBecause }, committed);
         return;
       } catch (error) {
         if (this.stopped) return;

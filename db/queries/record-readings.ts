@@ -3,9 +3,15 @@ import { runPrepared } from './prepared';
 
 export interface ReadingRow {
   sensorId: number;
-  /** Times in ms since 1970. */
-  measuredAt: number;
+  /** ms since 1970. */
   receivedAt: number;
+  reading: Measured;
+}
+
+/** What a sensor measured, in the units of the contract; null where it said nothing. */
+export interface Measured {
+  /** ms since 1970. */
+  measuredAt: number;
   gravity: number | null;
   temperature: number | null;
   battery: number | null;
@@ -81,15 +87,15 @@ export async function recordReadings(sequelize: Sequelize, readings: readonly Re
   const refusedSensors = new Set(refusals.flatMap((refusal) => (refusal.sensorId === null ? [] : [refusal.sensorId])));
   const result = await runPrepared<{ stored: number }>(sequelize, STATEMENT, [
     numbers(readings, (row) => row.sensorId),
-    numbers(readings, (row) => row.measuredAt / 1000),
+    numbers(readings, (row) => row.reading.measuredAt / 1000),
     numbers(readings, (row) => row.receivedAt / 1000),
-    numbers(readings, (row) => row.gravity),
-    numbers(readings, (row) => row.temperature),
-    numbers(readings, (row) => row.battery),
-    numbers(readings, (row) => row.signal),
-    numbers(readings, (row) => row.inclination),
-    numbers(readings, (row) => row.foam),
-    numbers(readings, (row) => row.sequence),
+    numbers(readings, (row) => row.reading.gravity),
+    numbers(readings, (row) => row.reading.temperature),
+    numbers(readings, (row) => row.reading.battery),
+    numbers(readings, (row) => row.reading.signal),
+    numbers(readings, (row) => row.reading.inclination),
+    numbers(readings, (row) => row.reading.foam),
+    numbers(readings, (row) => row.reading.sequence),
     numbers(refusals, (row) => row.sensorId),
     numbers(refusals, (row) => row.receivedAt / 1000),
     refusals.map((row) => row.road),

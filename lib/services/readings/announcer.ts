@@ -15,7 +15,7 @@ export class Announcer {
   /** Of the sensors in these rows, those to announce with the insert; the others are owed. */
   due(rows: readonly ReadingRow[], now: number): number[] {
     const tell = new Set<number>();
-    for (const { sensorId, measuredAt } of rows) {
+    for (const { sensorId, reading: { measuredAt } } of rows) {
       if (tell.has(sensorId)) continue;
       if (now - (this.toldAt.get(sensorId) ?? -Infinity) >= AT_MOST_EVERY_MS && !this.owed.has(sensorId)) {
         tell.add(sensorId);

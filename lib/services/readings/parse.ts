@@ -1,19 +1,7 @@
 import { isUtf8 } from 'node:buffer';
+import type { Measured } from '@/db/queries/record-readings';
 import { EARLIEST_MS, MAX_AHEAD_MS, MAX_READINGS_PER_MESSAGE, REFUSED_BODY_BYTES, reading, type TelemetryReading } from '@/lib/contracts/telemetry';
 import { looksLikeSenml, readSenml } from './senml';
-
-/** A reading that may be stored. */
-export interface AcceptedReading {
-  /** When it was measured, ms since 1970. */
-  measuredAt: number;
-  gravity: number | null;
-  temperature: number;
-  battery: number | null;
-  signal: number | null;
-  inclination: number | null;
-  foam: number | null;
-  sequence: number | null;
-}
 
 /** What could not be stored: the place in the message, why, and the first bytes of it. */
 export interface Refused {
@@ -23,7 +11,8 @@ export interface Refused {
 }
 
 export interface ParsedMessage {
-  accepted: AcceptedReading[];
+  /** May be stored. */
+  accepted: Measured[];
   refused: Refused[];
 }
 
@@ -36,24 +25,22 @@ export type BodyForm = 'json' | 'senml' | 'unknown';
  * @param form what the sender said the body is; `unknown` goes by its shape.
  */
 export function parseMessage(body: Buffer, arrivedAt: number, form: BodyForm = 'unknown'): ParsedMessage {
-  const whole = (reason: string): ParsedMessage => ({ accepted: [], refused: [{ index: 0, reason, body: head(body) }] });
-
-  if (body.length === 0) return whole('the message is empty');
-  if (!isUtf8(body)) return whole('the message is not UTF-8 text');
+  if (body.length === 0) return whole(body, 'the message is empty');
+  if (!isUtf8(body)) return whole(body, 'the message is not UTF-8 text');
   let value: unknown;
   try {
     value = JSON.parse(body.toString('utf8'));
   } catch {
-    return whole('the message is not JSON');
+    return whole(body, 'the message is not JSON');
   }
-  if (typeof value !== 'object' || value === null) return whole('the message must be a JSON object or an array of them');
+  if (typeof value !== 'object' || value === null) return whole(body, 'the message must be a JSON object or an array of them');
   const items: unknown[] = Array.isArray(value) ? value : [value];
-  if (items.length === 0) return whole('the message holds no reading');
+  if (items.length === 0) return whole(body, 'the message holds no reading');
 
   const senml = form === 'senml' || (form === 'unknown' && looksLikeSenml(value));
   const limit = senml ? MAX_READINGS_PER_MESSAGE * 3 : MAX_READINGS_PER_MESSAGE;
-  if (items.length > limit) return whole(`the message holds ${items.length} ${senml ? 'records' : 'readings'}; at most ${limit} go in one`);
-  return senml ? fromSenml(items, arrivedAt, whole) : fromReadings(items, arrivedAt);
+  if (items.length > limit) return whole(body, `the message holds ${items.length} ${senml ? 'records' : 'readings'}; at most ${limit} go in one`);
+  return senml ? fromSenml(items, arrivedAt, body) : fromReadings(items, arrivedAt);
 }
 
 function fromReadings(items: unknown[], arrivedAt: number): ParsedMessage {
@@ -66,9 +53,9 @@ function fromReadings(items: unknown[], arrivedAt: number): ParsedMessage {
   return parsed;
 }
 
-function fromSenml(items: unknown[], arrivedAt: number, whole: (reason: string) => ParsedMessage): ParsedMessage {
+function fromSenml(items: unknown[], arrivedAt: number, body: Buffer): ParsedMessage {
   const { readings, problems } = readSenml(items, arrivedAt);
-  if (readings.length === 0 && problems.length === 0) return whole('the SenML pack holds no density, temperature or voltage');
+  if (readings.length === 0 && problems.length === 0) return whole(body, 'the SenML pack holds no density, temperature or voltage');
   const parsed: ParsedMessage = { accepted: [], refused: problems.map((problem) => ({ ...problem, body: excerpt(items[problem.index]) })) };
   for (const { reading: item, index } of readings) {
     const checked = check(item, arrivedAt);
@@ -79,7 +66,7 @@ function fromSenml(items: unknown[], arrivedAt: number, whole: (reason: string) 
 }
 
 /** The reading in its stored form, or the reason why not. */
-function check(item: unknown, arrivedAt: number): AcceptedReading | string {
+function check(item: unknown, arrivedAt: number): Measured | string {
   const result = reading.safeParse(item);
   if (!result.success) return reasonOf(result.error.issues[0]);
   const value: TelemetryReading = result.data;
@@ -109,8 +96,10 @@ function reasonOf(issue: { path: PropertyKey[]; message: string } | undefined): 
   return issue.message.startsWith(field) ? issue.message : `${field} ${issue.message}`;
 }
 
-/** A copy: the message's own buffer is part of a larger one. */
-const head = (body: Buffer) => Buffer.from(body.subarray(0, REFUSED_BODY_BYTES));
+/** Nothing of the message is taken. What is kept of it is a copy: its own buffer is part of a larger one. */
+function whole(body: Buffer, reason: string): ParsedMessage {
+  return { accepted: [], refused: [{ index: 0, reason, body: Buffer.from(body.subarray(0, REFUSED_BODY_BYTES)) }] };
+}
 
 function excerpt(item: unknown): Buffer {
   let text: string | undefined;

@@ -5,7 +5,7 @@ import { isAboutTheRows, isMissingPartition } from '@/db/sqlstate';
 import type { SensorIdentity } from '@/lib/auth/sensors';
 import { REFUSED_BODY_BYTES } from '@/lib/contracts/telemetry';
 import type { Announcer } from './announcer';
-import { parseMessage, type BodyForm, type Refused } from './parse';
+import { parseMessage, type BodyForm, type ParsedMessage, type Refused } from './parse';
 
 /** A message as it came in, by whichever door. */
 export interface Message {
@@ -41,7 +41,7 @@ export async function recordMessages(messages: readonly Message[], announcer?: A
   const refusals: RefusalRow[] = [];
   messages.forEach((message, index) => {
     const { accepted, refused } = parsed[index]!;
-    for (const reading of accepted) readings.push({ sensorId: message.sensor!.id, receivedAt: message.arrivedAt, ...reading });
+    for (const reading of accepted) readings.push({ sensorId: message.sensor!.id, receivedAt: message.arrivedAt, reading });
     for (const { reason, body } of refused) refusals.push({ sensorId: message.sensor?.id ?? null, receivedAt: message.arrivedAt, road: message.road, reason, body });
   });
 
@@ -54,7 +54,7 @@ export async function recordMessages(messages: readonly Message[], announcer?: A
   }
 }
 
-function parse(message: Message): { accepted: Omit<ReadingRow, 'sensorId' | 'receivedAt'>[]; refused: Refused[] } {
+function parse(message: Message): ParsedMessage {
   const because = message.refusedBecause ?? (message.sensor ? undefined : 'no sensor has this name');
   if (because) return { accepted: [], refused: [{ index: 0, reason: because, body: Buffer.from(message.body.subarray(0, REFUSED_BODY_BYTES)) }] };
   return parseMessage(message.body, message.arrivedAt, message.form);
@@ -80,7 +80,7 @@ async function write(readings: ReadingRow[], refusals: RefusalRow[], messages: r
   const sequelize = database();
   const now = messages.at(-1)?.arrivedAt ?? 0;
   const tell = announcer ? announcer.due(readings, now) : [...new Set(readings.map((row) => row.sensorId))];
-  const months = new Set(readings.map((row) => monthOf(row.measuredAt)));
+  const months = new Set(readings.map((row) => monthOf(row.reading.measuredAt)));
   for (let attempt = 0; ; attempt += 1) {
     const unseen = [...months].filter((month) => !monthsSeen.has(month));
     if (unseen.length > 0) {

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import type { ReadingRow } from '@/db/queries/record-readings';
 import { Announcer } from '@/lib/services/readings/announcer';
 
-const row = (sensorId: number, measuredAt: number): ReadingRow => ({ sensorId, measuredAt, receivedAt: measuredAt, gravity: 1.05, temperature: 20, battery: null, signal: null, inclination: null, foam: null, sequence: null });
+const row = (sensorId: number, measuredAt: number): ReadingRow => ({ sensorId, receivedAt: measuredAt, reading: { measuredAt, gravity: 1.05, temperature: 20, battery: null, signal: null, inclination: null, foam: null, sequence: null } });
 
 describe('the announcer', () => {
   it('announces a sensor that was quiet at once, and once in a batch', () => {

@@ -3,7 +3,7 @@ import { Ingest } from '@/broker/ingest';
 import type { Message, Recorded } from '@/lib/services/readings/record';
 
 const sensor = (id: number) => ({ id, cellarId: 'c', identifier: `fs-${id}` });
-const message = (id: number, text = 'x') => ({ sensor: sensor(id), road: 'mqtt' as const, body: Buffer.from(text) });
+const message = (id: number, text = 'x') => ({ sensor: sensor(id), road: 'mqtt' as const, body: Buffer.from(text), arrivedAt: 0 });
 const nothingRefused = (messages: readonly Message[]): Recorded => ({ stored: messages.length, duplicates: 0, refused: messages.map(() => []) });
 const turn = (ms = 5) => new Promise((resolve) => setTimeout(resolve, ms));
 
