@@ -1,7 +1,7 @@
 /** @type {import('next').NextConfig} */
 export default {
-  // Both bundlers lose pg when they bundle Sequelize's dynamic require.
-  serverExternalPackages: ['sequelize', 'umzug'],
+  // Both bundlers lose pg when they bundle Sequelize's dynamic require, and pdfkit the files beside it.
+  serverExternalPackages: ['sequelize', 'umzug', 'pdfkit'],
   poweredByHeader: false,
   reactStrictMode: true,
   // Two checkouts, or a test run beside a running server, each build into their own folder.

@@ -51,3 +51,9 @@ export async function batchesToJudge(before: Date): Promise<string[]> {
   );
   return rows.map((row) => row.id);
 }
+
+/** The curve of the last judgement kept, as it goes over the wire; empty before the first. */
+export async function keptCurve(batchId: string): Promise<Array<{ at: string; gravity: number; lo: number; hi: number }>> {
+  const [row] = await database().query<{ curve: Array<{ at: string; gravity: number; lo: number; hi: number }> }>(`select curve from batch_states where batch_id = $batchId`, { bind: { batchId }, type: QueryTypes.SELECT });
+  return row?.curve ?? [];
+}

@@ -1,0 +1,65 @@
+import { Entry } from '@/db/models';
+import { findBatches } from '@/db/queries/batches';
+import { findLots } from '@/db/queries/lots';
+import { authorize } from '@/lib/auth/authorize';
+import type { Actor } from '@/lib/auth/policies';
+import type { z } from 'zod';
+import { mean } from 'simple-statistics';
+import { Op } from 'sequelize';
+import { ENTRY_KINDS } from '@/lib/contracts/batches';
+import type { CompareBody, compareQuery } from '@/lib/contracts/compare';
+import type { AssessmentBody } from '@/lib/contracts/assessment';
+import { apparentAttenuation } from '@/lib/core/strength/strength';
+import { NotFoundError } from '@/lib/errors';
+import { presentBatch } from '../batches/present';
+import { loadBatch } from '../batches/load';
+import { seriesOf } from '../batches/get-series';
+import { drinkState } from '../drink/state';
+import { iso } from '../iso';
+
+const HOUR_S = 3600;
+const hoursFrom = (zero: number, seconds: number) => Number(((seconds - zero) / HOUR_S).toFixed(3));
+
+/** Batches laid over each other: hour 0 is the pitch of each. */
+export async function compareBatches(actor: Actor, query: z.infer<typeof compareQuery>): Promise<CompareBody> {
+  authorize(actor, 'batches.read');
+  const items: CompareBody['items'] = [];
+  for (const id of [...new Set(query.batches)]) items.push(await one(actor, id, query.points));
+  return { items };
+}
+
+async function one(actor: Actor, id: string, points: number): Promise<CompareBody['items'][number]> {
+  const batch = await loadBatch(actor.cellarId, id);
+  const [row] = await findBatches({ cellarId: actor.cellarId, id, limit: 1 });
+  if (!row) throw new NotFoundError('batch');
+  const state = await drinkState(batch, batch.endedAt ?? new Date());
+  const series = await seriesOf(actor.cellarId, id, { points, ...(batch.pitchedAt && { from: iso(batch.pitchedAt) }), ...(batch.endedAt && { to: iso(batch.endedAt) }) });
+  const entries = await Entry.findAll({ where: { batchId: id, removedAt: { [Op.is]: null } }, order: [['at', 'ASC']] });
+  const lots = await findLots({ cellarId: actor.cellarId, batchId: id, limit: 100 });
+  const zero = batch.pitchedAt ? batch.pitchedAt.getTime() / 1000 : null;
+  const kindOf = (kind: string) => ENTRY_KINDS.find((item) => item === kind);
+  const scores = lots.flatMap((lot) => lot.tastings.flatMap((tasting) => (tasting.score === null ? [] : [tasting.score])));
+  const og = state.ledger.effectiveOg;
+  // Written by the worker in this form.
+  const terminalAt = (row.assessment as AssessmentBody | null)?.terminal_at?.value;
+  return {
+    batch: presentBatch(row, actor),
+    zero_at: zero === null ? null : iso(zero * 1000),
+    hours: zero === null ? [] : series.at.map((at) => hoursFrom(zero, at)),
+    gravity: zero === null ? [] : series.gravity,
+    temperature: zero === null ? [] : series.temperature,
+    by_hand: zero === null ? [] : entries.flatMap((entry) => (entry.kind === 'reading' && entry.gravity !== null ? [{ hour: hoursFrom(zero, entry.at.getTime() / 1000), gravity: entry.gravity }] : [])),
+    posts: zero === null ? [] : entries.flatMap((entry) => {
+      const kind = kindOf(entry.kind);
+      return kind && !['reading', 'note', 'observation'].includes(kind) ? [{ hour: hoursFrom(zero, entry.at.getTime() / 1000), kind }] : [];
+    }),
+    result: {
+      gravity: state.gravity,
+      abv_percent: state.strength?.balling.value.value ?? null,
+      attenuation_percent: og !== null && state.gravity !== null ? apparentAttenuation(og, state.gravity) : null,
+      hours_to_terminal: zero === null || !terminalAt ? null : hoursFrom(zero, Date.parse(terminalAt) / 1000),
+      score: scores.length > 0 ? Number(mean(scores).toFixed(2)) : null,
+      lots: lots.length,
+    },
+  };
+}
