@@ -87,13 +87,14 @@ function Loaded({ batch }: { batch: BatchBody }) {
   const timeZone = me?.cellar.time_zone ?? 'UTC';
   const phone = usePageLayout() === 'strip';
   const nowMs = useNow();
-  const now = Math.round((nowMs ?? Date.parse(batch.assessment?.at ?? batch.created_at)) / 1000);
   const [chosen, setChosen] = useState<Span | null>(null);
   const [opened, setOpened] = useState<Opened>(null);
 
   const asked = useSettled(chosen);
   const iso = (at: number) => new Date(at * 1000).toISOString();
   const series = useSeries(batch.id, asked ? { from: iso(asked.from), to: iso(asked.to), points: POINTS } : { points: POINTS });
+  const last = useMemo(() => lastReading(series.series), [series.series]);
+  const now = nowOf(nowMs ?? Date.parse(batch.assessment?.at ?? batch.created_at), last?.at ?? null);
   const { judgement, error: judgementError } = useJudgement(batch.id);
   const { entries, error: entriesError } = useEntries(batch.id, { limit: 200 });
   const { changes } = useVerdictChanges(batch.id);
@@ -109,7 +110,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
 
   const rows = useMemo(() => (judged ? callRows(batch, judged, now, timeZone) : []), [batch, judged, now, timeZone]);
   const log = useMemo(() => logRows(entries ?? [], changes ?? []), [entries, changes]);
-  const facts = factsOf(shown, lastReading(series.series), now, timeZone);
+  const facts = factsOf(shown, last, now, timeZone);
   const racked = judged?.stage === 'terminal' && (entries ?? []).some((entry) => entry.kind === 'rack');
   const vessel = vesselOf(shown, racked);
 
@@ -165,6 +166,12 @@ function Loaded({ batch }: { batch: BatchBody }) {
       )}
     </>
   );
+}
+
+/** The page's clock moves by the minute; a reading that has just come in is now. */
+function nowOf(clockMs: number, lastAt: number | null): number {
+  const now = Math.round(clockMs / 1000);
+  return lastAt !== null && lastAt > now && lastAt < now + 120 ? lastAt : now;
 }
 
 function lastReading(series: SeriesBody | undefined): LastReading | null {

@@ -71,7 +71,10 @@ function linesOf(call: CallBody, now: number, timeZone: string, ruler: RulerPart
 
 /** The bottle's Stop answers a question nobody may have asked yet: what wants a person stands before it, save a bottle that works again. */
 function rank(row: CallRow, judged: AssessmentBody): number {
-  if (row.word === 'Not known') return STATE_WORDS.indexOf('Leave be') - 0.5;
+  const quiet = STATE_WORDS.indexOf('Leave be') - 0.5;
+  // Before the start nothing else has anything to say.
+  if (row.name === 'started' && judged.calls.started.verdict !== 'yes' && row.state !== 'Check') return quiet - 0.1;
+  if (row.word === 'Not known') return quiet;
   const asked = row.name === 'bottle' && row.state === 'Stop' && judged.calls.bottle.kind !== 'refermentation';
   return asked ? STATE_WORDS.indexOf('Ready') + 0.5 : STATE_WORDS.indexOf(row.state);
 }

@@ -3,7 +3,8 @@ import { callRows, isLoud } from '@/components/batch/calls';
 import { figureWords, rulerOf, thresholdsOf } from '@/components/batch/evidence';
 import { batch, call, hours, judged, NOW } from './fixtures';
 
-const rows = (calls: Parameters<typeof judged>[0], over: Parameters<typeof batch>[0] = {}) => callRows(batch(over), judged(calls), NOW, 'UTC');
+/** A batch that works, unless told otherwise. */
+const rows = (calls: Parameters<typeof judged>[0], over: Parameters<typeof batch>[0] = {}) => callRows(batch(over), judged({ started: { verdict: 'yes' }, ...calls }), NOW, 'UTC');
 const row = (all: ReturnType<typeof rows>, name: string) => all.find((item) => item.name === name)!;
 
 describe('the calls of a batch page', () => {
@@ -26,6 +27,11 @@ describe('the calls of a batch page', () => {
     expect(row(all, 'rack')).toMatchObject({ state: 'Leave be', word: 'Not yet' });
     expect(row(all, 'stalled').word).toBe('Not known');
     expect(row(all, 'sensor')).toMatchObject({ state: 'Silent', word: 'Silent' });
+  });
+
+  it('begin with the start while it has not been seen, and not afterwards', () => {
+    expect(rows({ started: { verdict: 'unknown' }, stalled: { verdict: 'unknown' } })[0]!.name).toBe('started');
+    expect(rows({ started: { verdict: 'yes' } })[0]!.name).not.toBe('started');
   });
 
   it('offer the alert that nobody has, and name the one who has it', () => {
