@@ -9,7 +9,7 @@ import { freePort } from '@/scripts/lib/postgres';
 import { until } from './processes';
 
 const ROOT = resolve(import.meta.dirname, '../..');
-const DIST = '.next-test';
+const DIST = '.next';
 const SECRET = process.env.AUTH_SECRET ?? 'a secret that only the tests know, 0123456789';
 const BUILD_PATIENCE_MS = 600_000;
 

@@ -1,0 +1,72 @@
+import { AxeBuilder } from '@axe-core/playwright';
+import { chromium, type Browser, type BrowserContext, type Page } from 'playwright-core';
+import { afterAll, beforeAll, expect } from 'vitest';
+import { sessionCookie } from './web';
+
+/** Without these a headless Chromium looks for hosts that a test machine does not reach. */
+const FLAGS = ['--no-sandbox', '--disable-gpu', '--disable-quic', '--no-first-run', '--disable-background-networking', '--disable-component-update', '--disable-sync'];
+
+export const DESK = { width: 1440, height: 900 };
+export const PHONE = { width: 390, height: 844 };
+
+export interface Visit {
+  context: BrowserContext;
+  page: Page;
+  /** What the page complained of in its console. */
+  complaints: string[];
+}
+
+/** One Chromium for the file; each visit has its own cookies and is closed at the end. */
+export function useBrowser() {
+  let browser: Browser;
+  beforeAll(async () => {
+    browser = await chromium.launch({ executablePath: '/usr/bin/chromium', args: FLAGS });
+  });
+  afterAll(async () => {
+    await browser.close();
+  });
+
+  async function visit(options: { viewport?: { width: number; height: number }; phone?: boolean; night?: boolean } = {}): Promise<Visit> {
+    const context = await browser.newContext({
+      viewport: options.viewport ?? (options.phone ? PHONE : DESK),
+      hasTouch: options.phone ?? false,
+      isMobile: options.phone ?? false,
+      timezoneId: 'UTC',
+      locale: 'en-GB',
+      reducedMotion: 'reduce',
+    });
+    if (options.night !== undefined) await context.addInitScript((theme) => document.addEventListener('DOMContentLoaded', () => (document.documentElement.dataset.theme = theme)), options.night ? 'night' : 'day');
+    const page = await context.newPage();
+    page.setDefaultTimeout(20_000);
+    const complaints: string[] = [];
+    page.on('console', (message) => {
+      if (message.type() === 'error') complaints.push(message.text());
+    });
+    page.on('pageerror', (error) => complaints.push(error.message));
+    return { context, page, complaints };
+  }
+
+  /** A visit by somebody who has signed in before. */
+  async function visitAs(personId: string, url: string, options: Parameters<typeof visit>[0] = {}): Promise<Visit> {
+    const made = await visit(options);
+    const { cookie } = await sessionCookie(personId);
+    const [name, value] = cookie.split('=') as [string, string];
+    await made.context.addCookies([{ name, value, url }]);
+    return made;
+  }
+
+  return { visit, visitAs };
+}
+
+/** No serious or critical violation of WCAG A and AA on the page as it stands. */
+export async function expectAccessible(page: Page): Promise<void> {
+  const { violations } = await new AxeBuilder({ page }).withTags(['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa']).analyze();
+  const serious = violations.filter(({ impact }) => impact === 'serious' || impact === 'critical');
+  expect(serious.map(({ id, nodes }) => `${id}: ${nodes.map((node) => node.html.slice(0, 160)).join(' | ')}`)).toEqual([]);
+}
+
+/** Nothing is wider than the screen. */
+export async function expectNoSidewaysScroll(page: Page): Promise<void> {
+  const { wide, view } = await page.evaluate(() => ({ wide: document.documentElement.scrollWidth, view: document.documentElement.clientWidth }));
+  expect(wide).toBeLessThanOrEqual(view);
+}
