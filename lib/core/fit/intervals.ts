@@ -9,7 +9,7 @@
 const PROGRESS_EDGES = [0.15, 0.4, 0.65, 0.85, 0.95];
 
 const FACTOR_80 = [0.92, 0.95, 0.95, 0.98, 1.1, 1.6];
-const FACTOR_95 = [1.3, 1.3, 1.3, 1.3, 2.0, 3.2];
+const FACTOR_95 = [1.15, 1.15, 1.15, 1.15, 1.8, 3.0];
 /** Half width of the 80 % interval of ln(time to the end + 12 h). */
 const DATE_80 = [0.87, 0.61, 0.56, 0.52, 0.69, 1.2];
 const Z80 = 1.2816;

@@ -38,12 +38,37 @@ function grow(n: number): void {
   scratch = new Float64Array(size);
 }
 
+/** Lags, in bins, over which noise may hang together. */
+const LAGS = 6;
+
+/**
+ * By how much noise that hangs together widens the variance of a slope: the larger
+ * of (1+ρ)/(1−ρ) of the first lag, as if it were first-order, and of one and twice
+ * the sum of the first lags (Newey, West, Econometrica 55 (1987) 703–708), since white
+ * noise on top hides the slow part from the first lag. Each autocorrelation is
+ * raised by 2/n for the line that was taken out; at most 19.
+ */
+function inflation(n: number): number {
+  let square = 0;
+  for (let i = 0; i < n; i += 1) square += residuals[i]! * residuals[i]!;
+  if (square <= 0) return 1;
+  let sum = 0;
+  let first = 0;
+  for (let lag = 1; lag <= LAGS && lag < n - 2; lag += 1) {
+    let cross = 0;
+    for (let i = lag; i < n; i += 1) cross += residuals[i]! * residuals[i - lag]!;
+    const r = Math.max(0, cross / square + 2 / n);
+    if (lag === 1) first = Math.min(0.9, r);
+    sum += r;
+  }
+  return Math.min(19, Math.max((1 + first) / (1 - first), 1 + 2 * sum));
+}
+
 /**
  * Robust line through g[from..to) against t (h, ascending). Starts from
  * Theil–Sen on 12 block medians (Sen 1968), then four Huber re-weightings;
  * points beyond six sigmas and half a point count nothing. The standard error is
- * inflated for first-order autocorrelation, (1+ρ)/(1−ρ), with ρ cut to 0…0.9,
- * and is never under 0.05 points a day. Null with fewer than five points or none
+ * inflated for autocorrelation and is never under 0.05 points a day. Null with fewer than five points or none
  * of them apart in time.
  */
 export function robustLine(t: Float64Array, g: Float64Array, from: number, to: number): Line | null {
@@ -123,9 +148,6 @@ export function robustLine(t: Float64Array, g: Float64Array, from: number, to: n
   let st = 0;
   let stt = 0;
   let counted = 0;
-  let cross = 0;
-  let square = 0;
-  let before = 0;
   const clip = 2.5 * sigma;
   for (let i = 0; i < n; i += 1) {
     const x = t[from + i]! - middle;
@@ -135,15 +157,11 @@ export function robustLine(t: Float64Array, g: Float64Array, from: number, to: n
     stt += w * x * x;
     if (w > 0) counted += 1;
     let r = g[from + i]! - a - b * x;
-    r = r > clip ? clip : r < -clip ? -clip : r;
-    square += r * r;
-    if (i > 0) cross += r * before;
-    before = r;
+    residuals[i] = r > clip ? clip : r < -clip ? -clip : r;
   }
   if (counted < 5) return null;
-  const rho = Math.min(0.9, Math.max(0, (square > 0 ? cross / square : 0) + 2 / n));
   const spread = stt - (st * st) / sw;
-  const variance = (sigma * sigma * (1 + rho)) / (1 - rho) / spread;
+  const variance = (sigma * sigma * inflation(n)) / spread;
   return {
     slope: b * 24,
     se: Math.max(SE_FLOOR, 24 * Math.sqrt(variance)),

@@ -10,7 +10,7 @@ export { LOOK_H } from './intake';
 export const TERMINAL_POINTS = 1.7;
 export const BOTTLE_POINTS = 1.0;
 /** Points that are likely still to come when it may be racked. */
-export const RACK_POINTS = 2.0;
+export const RACK_POINTS = 1.8;
 /** Hours after the pitch at which a start is overdue. */
 export const OVERDUE_H: Record<BatchSetup['kind'], number> = { beer: 48, cider: 72, mead: 72, wine: 72 };
 
@@ -82,7 +82,7 @@ export class Watch extends Intake {
       const rate = -line.slope;
       const most = this.maxRates.get(window);
       if (rate > 1 && (!most || rate > most.rate)) this.maxRates.set(window, { rate, se: line.se });
-      else if (most && most.rate - rate > Math.max(0.06 * most.rate, 1.6 * Math.hypot(line.se, most.se))) below = true;
+      else if (most && most.rate - rate > Math.max(0.06 * most.rate, 1.3 * Math.hypot(line.se, most.se))) below = true;
       if (window === 24 && rate > this.maxRate) this.maxRate = rate;
     }
     let fitted = false;
@@ -105,7 +105,7 @@ export class Watch extends Intake {
       const line = this.line(window);
       if (!line) continue;
       if (line.slope > 1.5) continue;
-      upper = Math.min(upper, gasLPerH(-line.slope + 1.28 * line.se, this.setup.volumeL));
+      upper = Math.min(upper, gasLPerH(-line.slope + 1.15 * line.se, this.setup.volumeL));
       if (window === 12 || lower === Number.NEGATIVE_INFINITY) lower = gasLPerH(-line.slope - 1.64 * line.se, this.setup.volumeL);
     }
     const limit = this.swapGas();
@@ -126,7 +126,7 @@ export class Watch extends Intake {
     const line24 = this.line(24);
     const line48 = this.line(48);
     const lower48 = line48 ? -line48.slope - 1.64 * line48.se : null;
-    const upper48 = line48 ? -line48.slope + 1.64 * line48.se : null;
+    const upper48 = line48 ? -line48.slope + 1.28 * line48.se : null;
     const ground = this.groundLevel();
     const inside = ground !== null && ground <= this.zoneTop() && this.peaked.on;
     // The tail is only asked where the fall is slow enough for it to matter.
@@ -175,7 +175,7 @@ export class Watch extends Intake {
         const line = this.line(window);
         return line !== null && -line.slope - (window === 24 ? 1.64 : 2.5) * line.se > 1;
       });
-    hold(this.stuck, hour, flat, 4, moving || level < limit);
+    hold(this.stuck, hour, flat, 3, moving || level < limit);
     if (this.stuck.on) this.stuckCold = this.coldNow();
 
     const rate = line48 ? -line48.slope : null;

@@ -1,0 +1,83 @@
+import { beforeAll, describe, expect, it } from 'vitest';
+import { catalogue, GROUPS, MISTOLD_GROUPS, PITCHED } from './catalogue';
+import { naiveLooks } from './naive';
+import { pictures } from './plots';
+import { summarise, tables, type Summary } from './report';
+import { lookAt } from './run';
+import { addCase, newScore, type Score } from './score';
+import { Truths } from './truths';
+
+/** A seed of its own, and a fifth of the catalogue: enough to see a rule break. `npm run evaluate` has the whole of it. */
+const SEED = 7001;
+const few = (groups: readonly (readonly [string, number])[]): (readonly [string, number])[] => groups.map(([name, count]) => [name, Math.max(2, Math.round(count / 5))] as const);
+
+let ours: Score;
+let summary: Summary;
+let thumb: Summary;
+
+beforeAll(() => {
+  ours = newScore();
+  const naive = newScore();
+  for (const batch of catalogue(SEED, few(GROUPS))) {
+    const truths = new Truths(batch);
+    addCase(ours, batch, truths, lookAt(batch, PITCHED));
+    addCase(naive, batch, truths, naiveLooks(batch, PITCHED));
+  }
+  summary = summarise(ours);
+  thumb = summarise(naive);
+});
+
+describe('the calls on simulated batches', () => {
+  it('never let a batch be bottled that is stuck with sugar', () => {
+    expect(ours.unsafeBottleStuck).toEqual([]);
+    expect(summary.stuckBatches).toBeGreaterThan(4);
+  });
+
+  it('say "ready to bottle" wrongly of far fewer batches than three equal readings do', () => {
+    expect(summary.unsafeBottle).toBeLessThanOrEqual(Math.ceil(0.06 * summary.batches));
+    expect(thumb.unsafeBottle).toBeGreaterThan(8 * Math.max(1, summary.unsafeBottle) - 1);
+  });
+
+  it('find starts, stalls, stuck floats and batches that work again', () => {
+    expect(summary.decisions.started.recall).toBeGreaterThan(0.93);
+    expect(summary.decisions.stuck.recall).toBeGreaterThan(0.75);
+    expect(summary.decisions['sensor frozen'].recall).toBeGreaterThan(0.6);
+    expect(summary.decisions['working again'].recall).toBeGreaterThan(0.6);
+  });
+
+  it('cry wolf seldom', () => {
+    expect(summary.decisions['ready to bottle'].falsePerMonth).toBeLessThan(0.12);
+    expect(summary.decisions.stuck.falsePerMonth).toBeLessThan(0.25);
+    expect(summary.decisions['sensor frozen'].falsePerMonth).toBeLessThan(0.1);
+  });
+
+  it('hold their intervals of the final gravity about as often as they say', () => {
+    for (const share of ['25', '50', '75']) {
+      const forecast = summary.forecasts[share]!;
+      expect(forecast.in80).toBeGreaterThan(0.6);
+      expect(forecast.in95).toBeGreaterThan(0.85);
+    }
+  });
+
+  it('come through with what people tell wrongly', () => {
+    const mistold = newScore();
+    for (const batch of catalogue(SEED, few(MISTOLD_GROUPS))) addCase(mistold, batch, new Truths(batch), lookAt(batch, PITCHED));
+    expect(mistold.unsafeBottleStuck).toEqual([]);
+    expect(summarise(mistold).decisions.started.recall).toBeGreaterThan(0.9);
+  });
+
+  it('can be shown as a table and as pictures', () => {
+    expect(tables(summary, thumb)).toContain('ready to bottle');
+    for (const { svg } of pictures(ours)) expect(svg).toMatch(/^<svg[\s\S]*<\/svg>$/);
+  });
+});
+
+describe('the catalogue', () => {
+  it('is the same for the same seed and another for another', () => {
+    const [one] = [...catalogue(5, [['healthy beer', 1]])];
+    const [same] = [...catalogue(5, [['healthy beer', 1]])];
+    const [other] = [...catalogue(6, [['healthy beer', 1]])];
+    expect(same!.readings).toEqual(one!.readings);
+    expect(other!.readings[0]!.gravity).not.toBe(one!.readings[0]!.gravity);
+  });
+});

@@ -1,0 +1,147 @@
+import { describe, expect, it } from 'vitest';
+import { assess } from '../../../lib/core/assess';
+import { modelGravity } from '../../../lib/core/fit/models';
+import type { BatchEvent, BatchSetup, Reading } from '../../../lib/core/types';
+import { Random } from '../../evaluation/random';
+
+const PITCH = Date.UTC(2026, 1, 20, 18);
+const DAY = 86_400_000;
+
+const setup: BatchSetup = {
+  kind: 'cider',
+  pitchedAt: PITCH,
+  originalGravity: 1.055,
+  volumeL: 4.5,
+  vesselL: 5,
+  attenuation: { min: 0.95, max: 1.05 },
+  alcoholToleranceAbv: 14,
+  temperature: { minC: 15, maxC: 22 },
+  neck: 'blow_off',
+  events: [],
+  timeZone: 'UTC',
+};
+
+/** A float's record of a gravity curve, every 30 min. */
+function record(days: number, points: (day: number) => number, celsius: (day: number) => number = () => 19, noise = 0.4): Reading[] {
+  const random = new Random(3, 'calls');
+  const readings: Reading[] = [];
+  for (let day = 0; day <= days; day += 1 / 48) {
+    readings.push({ at: PITCH + Math.round(day * DAY), gravity: 1 + (points(day) + random.normal(0, noise)) / 1000, temperature: celsius(day) + random.normal(0, 0.1) });
+  }
+  return readings;
+}
+
+const cider = (day: number): number => modelGravity('kinetic', [55, -1, -1, 0.2, -1.2, -1], day);
+const at = (day: number, readings: Reading[], extra: Partial<BatchSetup> = {}) => assess({ ...setup, ...extra }, readings, PITCH + day * DAY).assessment;
+
+describe('the calls', () => {
+  it('say that it has started once it falls, and since when', () => {
+    const { started } = at(3, record(3, cider)).calls;
+    expect(started.verdict).toBe('yes');
+    expect(started.since).toBeGreaterThan(PITCH);
+  });
+
+  it('say that a start is overdue after three days of nothing', () => {
+    const { started } = at(4, record(4, () => 55)).calls;
+    expect(started).toMatchObject({ verdict: 'hold', kind: 'overdue' });
+  });
+
+  it('keep the tube on while the gas is strong, then ask for the airlock, then see that it is on', () => {
+    const readings = record(14, cider);
+    expect(at(2, readings).calls.neck.verdict).toBe('hold');
+    const later = at(13, readings).calls.neck;
+    expect(later.verdict).toBe('yes');
+    expect(later.headline).toMatch(/^Swap tube for airlock: from /);
+    const swapped = at(13, readings, { events: [{ at: PITCH + 12 * DAY, kind: 'neck', neck: 'airlock' }] }).calls.neck;
+    expect(swapped).toMatchObject({ verdict: 'no', headline: 'Airlock is on already.' });
+  });
+
+  it('do not let a ferment that ends be bottled before it holds, and do afterwards', () => {
+    const readings = record(40, cider);
+    expect(at(8, readings).calls.bottle.verdict).not.toBe('yes');
+    const { calls, stage } = at(40, readings);
+    expect(calls.bottle.verdict).toBe('yes');
+    expect(calls.rack.verdict).toBe('yes');
+    expect(calls.stalled.verdict).toBe('no');
+    expect(stage).toBe('terminal');
+  });
+
+  it('call a stall with sugar left, and forbid the bottle', () => {
+    const stopped = (day: number): number => Math.max(24, cider(day));
+    const { calls } = at(16, record(16, stopped));
+    expect(calls.stalled).toMatchObject({ verdict: 'yes', kind: 'stuck' });
+    expect(calls.bottle.verdict).toBe('hold');
+  });
+
+  it('name the cold where the temperature fell below the range', () => {
+    const stopped = (day: number): number => Math.max(24, cider(day));
+    const { calls } = at(14, record(14, stopped, (day) => (day < 6 ? 19 : 9)));
+    expect(calls.stalled).toMatchObject({ verdict: 'yes', kind: 'cold' });
+    expect(calls.temperature).toMatchObject({ verdict: 'yes', kind: 'low' });
+  });
+
+  it('see a batch that works again after it was sweetened at rest', () => {
+    const events: BatchEvent[] = [{ at: PITCH + 30 * DAY, kind: 'addition', sugarG: 90 }];
+    const sweet = (day: number): number => (day < 30 ? cider(day) : cider(30) + 7.7 * Math.exp(-Math.max(0, day - 31) / 3));
+    const { calls } = at(36, record(36, sweet), { events });
+    expect(calls.bottle).toMatchObject({ verdict: 'hold', kind: 'refermentation' });
+  });
+
+  it('say that the sensor is silent, and that they do not know', () => {
+    const { calls } = at(6, record(5, cider));
+    expect(calls.sensor).toMatchObject({ verdict: 'yes', kind: 'silent' });
+    expect(calls.stalled.verdict).toBe('unknown');
+    expect(calls.bottle.verdict).toBe('unknown');
+  });
+
+  it('see a float that is stuck', () => {
+    const readings = record(6, cider).map((reading) => (reading.at > PITCH + 4 * DAY ? { ...reading, gravity: 1.03 + 1e-5 * Math.sin(reading.at) } : reading));
+    expect(at(6, readings).calls.sensor).toMatchObject({ verdict: 'yes', kind: 'frozen' });
+  });
+
+  it('carry a figure with its unit in every reason that has evidence, and no exclamation', () => {
+    for (const day of [0.2, 2, 6, 13, 30]) {
+      for (const call of Object.values(at(day, record(day, cider)).calls)) {
+        expect(`${call.headline} ${call.reason} ${call.act ?? ''}`).not.toMatch(/!|undefined|NaN|null/);
+        expect(call.headline).toMatch(/\.$/);
+        for (const item of call.evidence) expect(item.unit).not.toBe('');
+      }
+    }
+  });
+
+  it('know nothing before the pitch is told', () => {
+    const { calls, stage } = at(3, record(3, cider), { pitchedAt: null });
+    expect(stage).toBe('unknown');
+    expect(calls.bottle.verdict).toBe('unknown');
+  });
+
+  it('take an unlogged sugar addition for one, and a float that was moved for that', () => {
+    const fed = (day: number): number => (day < 6 ? cider(day) : cider(day) + 12 * Math.exp(-(day - 6) / 4));
+    const before = at(5.9, record(5.9, fed));
+    const after = at(7, record(7, fed));
+    expect(after.attenuationPercent!).toBeLessThan(before.attenuationPercent!);
+    const moved = (day: number): number => cider(day) + (day > 30 ? 4 : 0);
+    const gravity = at(40, record(40, moved)).gravity!.value;
+    expect(Math.abs(gravity - (1 + cider(40) / 1000))).toBeLessThan(0.0015);
+  });
+});
+
+describe('hydrometer readings alone', () => {
+  const read = (day: number, gravity: number): BatchEvent => ({ at: PITCH + day * DAY, kind: 'reading', gravity });
+  const events = [read(3, 1.046), read(7, 1.03), read(14, 1.006), read(21, 1.0), read(28, 1.0)];
+
+  it('carry a start, a swap, racking and, when they hold, bottling', () => {
+    expect(at(4, [], { events }).calls.started.verdict).toBe('yes');
+    expect(at(15, [], { events }).calls.bottle.verdict).toBe('no');
+    const late = at(29, [], { events }).calls;
+    expect(late.rack.verdict).toBe('yes');
+    expect(late.bottle.verdict).toBe('yes');
+  });
+
+  it('ask for the reading that would settle it', () => {
+    const { bottle } = at(22, [], { events }).calls;
+    expect(bottle.verdict).toBe('unknown');
+    expect(bottle.act).toMatch(/^Read again /);
+    expect(bottle.expectedAt).toBeGreaterThan(PITCH + 23 * DAY);
+  });
+});
