@@ -43,7 +43,10 @@ export function proxy(request: NextRequest): NextResponse {
   const { pathname, search } = request.nextUrl;
   if (pathname.startsWith('/api/')) {
     const response = secured(NextResponse.next());
-    response.headers.set('content-security-policy', "default-src 'none'; frame-ancestors 'none'");
+    // A printed sheet is shown inside our own page; nothing else of the API is ever framed.
+    const sheet = pathname.endsWith('.pdf');
+    if (sheet) response.headers.set('x-frame-options', 'SAMEORIGIN');
+    response.headers.set('content-security-policy', sheet ? "default-src 'none'; object-src 'self'; style-src 'unsafe-inline'; frame-ancestors 'self'" : "default-src 'none'; frame-ancestors 'none'");
     return response;
   }
   if (!OPEN.test(pathname) && !request.cookies.has(sessionCookie())) {

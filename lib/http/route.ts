@@ -12,7 +12,8 @@ import { problemOf } from './problem';
 import { requireSameSite } from './same-site';
 
 type Parsed<S> = S extends z.ZodType ? z.output<S> : undefined;
-type Answer<S> = S extends z.ZodType ? z.output<S> : void;
+/** Where there is no schema: nothing, or a file that the route made itself. */
+type Answer<S> = S extends z.ZodType ? z.output<S> : Response | void;
 type Part<E extends Endpoint, K extends 'params' | 'query' | 'body'> = E extends Record<K, infer S> ? Parsed<S> : undefined;
 
 export interface RouteContext<E extends Endpoint> {
@@ -59,6 +60,7 @@ async function answer<E extends Endpoint>(endpoint: E, handle: (context: RouteCo
     // The conditional types of the context follow the endpoint's literal; the checks above make them hold.
   } as RouteContext<E>;
   const result = await handle(context);
+  if (result instanceof Response) return result;
   if (endpoint.response === null) return new Response(null, { status: endpoint.status, headers });
   return Response.json(endpoint.response.parse(result), { status: endpoint.status, headers });
 }

@@ -93,7 +93,7 @@ export interface Fact {
 /** Label over value, in columns as wide as they need, in as many rows as it takes, at the largest size at which all of it fits. */
 export function fitFacts(facts: readonly Fact[], box: Box, largest: number, measure: Measure): Placed[] {
   for (let size = largest; size >= SMALLEST; size *= STEP) {
-    const small = size * 0.62;
+    const small = size * 0.7;
     const gap = size * 0.9;
     const row = small * (ASCENT + DESCENT) + size * (ASCENT + DESCENT) + size * 0.1;
     const widths = facts.map((fact) => Math.max(measure(fact.label, 'plain', small), measure(fact.value, 'strong', size)));

@@ -51,13 +51,14 @@ export function layLabel(text: LabelText, design: Design, size: { width: number;
 }
 
 /** The foot of every label: facts, the words of the law, and the code at the right. */
-function foot(text: LabelText, frame: Frame, top: number, left: number): { texts: Placed[]; qr: Box | null } {
+function foot(text: LabelText, frame: Frame, top: number, left: number, qrTop = top): { texts: Placed[]; qr: Box | null } {
   const { width, height, margin, scale, measure } = frame;
   const qrSide = QR_MM * MM;
   const clear = QR_CLEAR_MM * MM;
   const bottom = height - margin;
   const room = bottom - top;
-  const qr: Box | null = text.qr && room >= qrSide && width - left > 2.2 * qrSide ? { x: width - margin - qrSide, y: bottom - qrSide - Math.max(0, (room - qrSide) / 2), w: qrSide, h: qrSide } : null;
+  const qrRoom = bottom - qrTop;
+  const qr: Box | null = text.qr && qrRoom >= qrSide && width - left > 2.2 * qrSide ? { x: width - margin - qrSide, y: bottom - qrSide - (qrRoom - qrSide) / 2, w: qrSide, h: qrSide } : null;
   const w = (qr ? qr.x - clear : width - margin) - left;
   const smallH = text.small ? Math.min(room * 0.36, 7 * scale * 2.2) : 0;
   const facts = fitFacts(text.facts, { x: left, y: top, w, h: room - smallH - (smallH ? margin * 0.25 : 0) }, 9.5 * Math.max(scale, 0.6), measure);
@@ -68,7 +69,7 @@ function foot(text: LabelText, frame: Frame, top: number, left: number): { texts
 /** The label is the log: the fall from the left, the name in the space it leaves. */
 function logLabel(text: LabelText, frame: Frame, fall: Fall): LabelPicture {
   const { width, height, margin, scale, measure } = frame;
-  const bed = height * (frame.scale < 0.75 ? 0.55 : 0.62);
+  const bed = height * (frame.scale < 0.75 ? 0.5 : 0.62);
   const top = margin * 1.8;
   const art: Box = { x: 0, y: top, w: width, h: bed - top };
   const endSize = Math.max(5, 8 * scale);
@@ -81,9 +82,11 @@ function logLabel(text: LabelText, frame: Frame, fall: Fall): LabelPicture {
     ends.push({ face: 'plain', size: endSize, text: text.ends.final, x: width - margin - w, y: finalTop + endSize * ASCENT, w });
   }
   const flagSide = Math.max(5.5, 8.5 * scale);
-  const flags = spread(fall.posts.map((post) => ({ x: post.t * width, letter: post.letter })), flagSide, width).map(({ x, letter }) => ({ box: { x, y: bed, w: flagSide, h: flagSide }, letter }));
-
-  const footer = foot(text, frame, bed + (flags.length > 0 ? flagSide + margin * 0.35 : margin * 0.6), margin);
+  const flagged = fall.posts.length > 0;
+  const footer = foot(text, frame, bed + (flagged ? flagSide + margin * 0.35 : margin * 0.6), margin, bed + (QR_CLEAR_MM + 0.5) * MM);
+  // The code keeps its white: flags stop before it.
+  const end = footer.qr ? footer.qr.x - QR_CLEAR_MM * MM : width;
+  const flags = spread(fall.posts.map((post) => ({ x: post.t * width, letter: post.letter })), flagSide, end).map(({ x, letter }) => ({ box: { x, y: bed, w: flagSide, h: flagSide }, letter }));
   return {
     texts: [...ends, ...nameBeside(text, frame, fall, art, finalTop, margin + originalW), ...flags.map(({ box, letter }) => flagLetter(letter, box, measure)), ...footer.texts],
     qr: footer.qr,
@@ -107,7 +110,7 @@ function nameBeside(text: LabelText, frame: Frame, fall: Fall, art: Box, floor: 
     const name = fitText(text.name, box, { face: 'name', largest: nameSize(text.name) * scale, smallest: 7, lines: 3, align: 'right', valign: 'top' }, measure);
     if (name.length === 0 || (best[0] && name[0]!.size <= best[0].size)) continue;
     const last = name.at(-1)!;
-    const under = fitText(text.under, { x, y: last.y + last.size * DESCENT, w: box.w, h: underH }, { face: 'plain', largest: underSize, smallest: 4.5, lines: 1, align: 'right' }, measure);
+    const under = fitText(text.under, { x, y: last.y + last.size * 0.3, w: box.w, h: underH }, { face: 'plain', largest: underSize, smallest: 4.5, lines: 1, align: 'right' }, measure);
     best = [...name, ...under];
   }
   return best;
@@ -156,7 +159,7 @@ function bandsLabel(text: LabelText, frame: Frame): LabelPicture {
   const underH = text.under ? Math.max(6, 11 * scale) : 0;
   const name = fitText(text.name, { x: left, y: margin, w: width - margin - left, h: split - margin * 1.4 - underH }, { face: 'name', largest: nameSize(text.name) * scale, smallest: 7, lines: 3, align: 'left', valign: 'top' }, measure);
   const last = name.at(-1);
-  const under = fitText(text.under, { x: left, y: last ? last.y + last.size * DESCENT : margin, w: width - margin - left, h: underH }, { face: 'plain', largest: Math.max(5, 8.4 * scale), smallest: 4.5, lines: 1, align: 'left' }, measure);
+  const under = fitText(text.under, { x: left, y: last ? last.y + last.size * 0.3 : margin, w: width - margin - left, h: underH }, { face: 'plain', largest: Math.max(5, 8.4 * scale), smallest: 4.5, lines: 1, align: 'left' }, measure);
   const footer = foot(text, frame, split + margin * 0.3, left);
   return { texts: [...name, ...under, ...footer.texts], qr: footer.qr, art: { kind: 'bands', box: band }, rules: [] };
 }
