@@ -60,18 +60,8 @@ export async function seedDemo(sequelize: Sequelize, now: number): Promise<Seede
       simulators.push({ sensor: sensor.identifier, secret, scenario: demo.scenario, seed: demo.seed, startedAt: new Date(start).toISOString(), interval_s: INTERVAL_S });
       for (const { at, arrivesAt, body } of batch.readings) {
         if (arrivesAt > now) continue;
-        backfill.push({
-          sensorId: sensor.id,
-          measuredAt: at,
-          receivedAt: arrivesAt,
-          gravity: body.gravity ?? null,
-          temperature: body.temperature,
-          battery: body.battery ?? null,
-          signal: body.signal ?? null,
-          inclination: body.inclination ?? null,
-          foam: body.foam ?? null,
-          sequence: body.sequence ?? null,
-        });
+        const { gravity = null, temperature, battery = null, signal = null, inclination = null, foam = null, sequence = null } = body;
+        backfill.push({ sensorId: sensor.id, receivedAt: arrivesAt, reading: { measuredAt: at, gravity, temperature, battery, signal, inclination, foam, sequence } });
       }
     }
     for (let from = 0; from < backfill.length; from += ROWS_AT_ONCE) await recordReadings(sequelize, backfill.slice(from, from + ROWS_AT_ONCE), [], [], transaction);

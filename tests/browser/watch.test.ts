@@ -7,7 +7,7 @@ import { expectAccessible, expectNoSidewaysScroll, useBrowser } from '../support
 import { useDatabase } from '../support/database';
 import { signIn } from '../support/devices';
 import { buildCellar, buildSensor } from '../support/factories';
-import { startHouse, type House } from '../support/whole-house';
+import { startHouse, type House } from '../support/house';
 import { startProcess, until } from '../support/processes';
 
 const db = useDatabase();
