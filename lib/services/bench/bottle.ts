@@ -115,7 +115,7 @@ async function writeLot({ actor, batch, input, state, request, judged, at, now, 
       originalGravity: state.ledger.effectiveOg,
       finalGravity: request.done.gravity,
       abv: strengthOf(state, request, judged.abvAddedPercent),
-      sparkle: sparkleOf(judged),
+      sparkle: sparkleOf(judged, wantedOf(input)),
       bench: kept(input, request, judged),
       overrideReason: override?.reason ?? null,
       overrideBy: override ? actor.personId : null,
@@ -138,10 +138,13 @@ function strengthOf(state: DrinkState, request: BenchRequest, added: number): Ra
   return { lo: value.lo, value: value.value + added, hi: value.hi + added };
 }
 
-function sparkleOf(judged: Allowed): Lot['sparkle'] {
-  const volumes = Math.max(0, ...judged.bottles.map((bottle) => bottle.volumes.value.value));
+/** By what was wanted, where it was told; else by what is likely in the bottle. */
+function sparkleOf(judged: Allowed, wanted: number | null): Lot['sparkle'] {
+  const volumes = wanted ?? Math.max(0, ...judged.bottles.map((bottle) => bottle.volumes.value.value));
   return judged.dose.way === 'none' && volumes < SPARKLING_FROM ? 'still' : volumes >= SPARKLING_FROM ? 'sparkling' : volumes >= LIGHT_FROM ? 'light' : 'still';
 }
+
+const wantedOf = (input: BottleBatchForm): number | null => (input.priming.way === 'weighed' ? input.priming.wanted_volumes : null);
 
 function kept(input: BottleBatchForm, request: BenchRequest, judged: Allowed): KeptBench {
   return {
@@ -154,7 +157,7 @@ function kept(input: BottleBatchForm, request: BenchRequest, judged: Allowed): K
       warmest_store_c: input.warmest_store_c,
       worst_bar: Math.max(0, ...judged.bottles.map((bottle) => bottle.worst.bar)),
       volumes: judged.bottles[0]?.volumes.value ?? null,
-      wanted_volumes: input.priming.way === 'weighed' ? input.priming.wanted_volumes : null,
+      wanted_volumes: wantedOf(input),
       dose: presentDose(judged.dose),
       cautions: [...judged.cautions],
     },

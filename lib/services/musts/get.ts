@@ -20,7 +20,8 @@ export async function getMust(actor: Actor, id: string, query: { version?: numbe
   const versions = await MustVersion.findAll({ where: { mustId: id }, order: [['version', 'DESC']], transaction });
   const source = await sourceOf(versions.at(-1), transaction);
   const names = await namesOf(versions.map((version) => version.createdBy), transaction);
-  const [batches, nextTime] = await Promise.all([batchesOfMust(id, transaction), nextTimeOfMusts([id, ...(source ? [source.must.id] : [])], transaction)]);
+  const batches = await batchesOfMust(id, transaction);
+  const nextTime = await nextTimeOfMusts([id, ...(source ? [source.must.id] : [])], transaction);
   const sheet = keptSheet(shown.body);
   return {
     id,
