@@ -6,6 +6,9 @@ import { DECISIONS, Truths, type Decision } from './truths';
 export interface Tally {
   moments: number;
   detected: number;
+  /** The same of batches whose float neither stuck, drifted nor fell silent: the others are rightly refused for a while. */
+  soundMoments: number;
+  soundDetected: number;
   delays: number[];
   falseAlarms: number;
   missed: string[];
@@ -47,7 +50,7 @@ export function newScore(): Score {
   return {
     batches: 0,
     months: 0,
-    tallies: Object.fromEntries(DECISIONS.map((one) => [one, { moments: 0, detected: 0, delays: [], falseAlarms: 0, missed: [], wrong: [] }])) as unknown as Record<Decision, Tally>,
+    tallies: Object.fromEntries(DECISIONS.map((one) => [one, { moments: 0, detected: 0, soundMoments: 0, soundDetected: 0, delays: [], falseAlarms: 0, missed: [], wrong: [] }])) as unknown as Record<Decision, Tally>,
     unsafeBottle: [],
     unsafeBottleStuck: [],
     stuckBatches: 0,
@@ -59,6 +62,8 @@ export function newScore(): Score {
   };
 }
 
+/** Groups in which the float gives nothing to go by for days. */
+const BLIND_GROUPS: ReadonlySet<string> = new Set(['frozen float', 'sensor drift', 'dropouts and late delivery']);
 /** Hours in which a second false alarm is the same one. */
 const REFRACTORY_H = 24;
 
@@ -93,6 +98,9 @@ function addDecision(tally: Tally, decision: Decision, batch: Case, truths: Trut
     const first = looks.find((look) => look.hour >= from && look.hour <= to && look.said[decision] && truths.acceptable(decision, look.hour));
     if (!first && to > batch.endH) continue;
     tally.moments += 1;
+    const sound = !BLIND_GROUPS.has(batch.group);
+    if (sound) tally.soundMoments += 1;
+    if (sound && first) tally.soundDetected += 1;
     if (first) {
       tally.detected += 1;
       tally.delays.push(Math.max(0, first.hour - moment));

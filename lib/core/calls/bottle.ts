@@ -1,29 +1,34 @@
 import type { Call } from '../types';
 import { VOLUMES_PER_POINT } from '../gas/gas';
-import { finalGravityHalfWidths } from '../fit/intervals';
+import { BOTTLE_POINTS } from '../stages/watch';
 import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, gravityWords, pointsWords, rateWords } from './words';
 
-/** Volumes of CO2 that could still come in the bottle, at the upper end of what may be left (9 in 10). */
+/** Points that may still fall, nine times in ten; null without a level. */
+function mostToCome(scene: Scene): number | null {
+  const left = scene.level === null ? null : scene.watch.remainingNow();
+  return left && Math.max(0, left.value + 1.28 * left.sd);
+}
+
+/** Volumes of CO2 that could still come in the bottle, nine times in ten. */
 export function worstExtraVolumes(scene: Scene): number | null {
-  const { watch, level } = scene;
-  const fit = watch.fit();
-  if (level === null || !fit) return null;
-  const { half80 } = finalGravityHalfWidths(fit.fgSd, watch.progress());
-  return Math.max(0, level - fit.parameters[1]! + half80) * VOLUMES_PER_POINT;
+  const most = mostToCome(scene);
+  return most === null ? null : most * VOLUMES_PER_POINT;
 }
 
 /** Has it stopped for good? The one call that is wrong only on the safe side. */
 export function bottleCall(scene: Scene): Call {
   const { watch, level, rate } = scene;
   const top = watch.zoneTop();
+  const most = mostToCome(scene);
   const worst = worstExtraVolumes(scene);
   const figures = [
     ...(level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG')]),
-    ...(rate ? [evidence('fall', rate.value, 0.25, 'points/d')] : []),
+    ...(most === null ? [] : [evidence('may still fall', most, BOTTLE_POINTS, 'points')]),
+    ...(rate ? [evidence('fall', rate.value, 0.5, 'points/d')] : []),
     ...(worst === null ? [] : [evidence('worst extra carbonation', worst, 1, 'volumes')]),
   ];
-  const changesIt = `Changes it: ${gravityWords(top)} or less and no fall for ${Math.round(Math.max(72, Math.min(168, 0.2 * watch.lookedAt)))} h.`;
+  const changesIt = `Changes it: ${gravityWords(top)} or less, and at most ${pointsWords(BOTTLE_POINTS)} that may still fall.`;
   if (watch.refermenting.on) {
     const fallen = level !== null && watch.plateau !== null ? pointsWords(watch.plateau - level) : 'More than 1.5 points';
     return call('hold', 'Do not bottle: it works again.', `${fallen} below where it had come to rest.`, {

@@ -156,7 +156,7 @@ export function robustLine(t: Float64Array, g: Float64Array, from: number, to: n
     st += w * x;
     stt += w * x * x;
     if (w > 0) counted += 1;
-    let r = g[from + i]! - a - b * x;
+    const r = g[from + i]! - a - b * x;
     residuals[i] = r > clip ? clip : r < -clip ? -clip : r;
   }
   if (counted < 5) return null;
