@@ -101,7 +101,8 @@ export class Watch extends Intake {
     // Any window bounds the present rate from above while it falls; the sharpest one wins.
     let upper = Number.POSITIVE_INFINITY;
     let lower = Number.NEGATIVE_INFINITY;
-    for (const window of [12, 18, 24]) {
+    // Once it is on, only its release is asked for.
+    for (const window of this.airlock.on ? [12] : [12, 18, 24]) {
       const line = this.line(window);
       if (!line) continue;
       if (line.slope > 1.5) continue;
@@ -171,7 +172,7 @@ export class Watch extends Intake {
     const flat = level > limit && settled && begun && (slow(line48, 0.5, 0.75) || slow(this.line(72), 0.35, 0.5));
     const moving =
       this.stuck.on &&
-      [8, 12, 24].some((window) => {
+      [8, 24].some((window) => {
         const line = this.line(window);
         return line !== null && -line.slope - (window === 24 ? 1.64 : 2.5) * line.se > 1;
       });
