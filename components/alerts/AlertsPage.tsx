@@ -1,6 +1,6 @@
 'use client';
 
-import { useRouter, useSearchParams } from 'next/navigation';
+import { useSearchParams } from 'next/navigation';
 import { useState } from 'react';
 import { FilterTabs } from '@/components/ui/FilterTabs';
 import { Haze } from '@/components/ui/Haze';
@@ -32,7 +32,6 @@ export function AlertsPage() {
   const { me, may, error: meError, retry: retryMe } = useMe();
   const timeZone = me?.cellar.time_zone ?? 'UTC';
   const nowMs = useNow();
-  const router = useRouter();
   const asked = useSearchParams().get('alert');
   const [tab, setTab] = useState<Tab>('all');
   const [cleared, setCleared] = useState(CLEARED_FIRST);
@@ -68,7 +67,8 @@ export function AlertsPage() {
   // On a wide page the worst open alert stands beside the list; on a phone only what was chosen.
   const chosen = everything.find((alert) => alert.id === asked) ?? null;
   const beside = chosen ?? everything[0] ?? null;
-  const choose = (id: string | null) => router.push(id === null ? '/alerts' : `/alerts?alert=${id}`, { scroll: false });
+  // The address keeps the choice for the way back and for sharing; nothing has to be fetched for it.
+  const choose = (id: string | null) => window.history.pushState(null, '', id === null ? '/alerts' : `/alerts?alert=${id}`);
 
   async function clear(alert: AlertBody) {
     setFailed(null);

@@ -1,5 +1,5 @@
 import { placePosts, keepClear, type Label } from './place';
-import { gravityNow, hasStopped, knownUntil, valueAt, type Picture } from './picture';
+import { gravityNow, hasStopped, knownUntil, valueAt, type Bracket, type Picture } from './picture';
 import { clock, when } from './zone';
 import { underText } from './ground';
 import { clipToPlot, crisp, line, setText, type Mark, type View } from './view';
@@ -23,6 +23,20 @@ function ring({ context, palette }: View, x: number, y: number, radius: number, 
   }
 }
 
+/** Over a ring where there is room; else under and right of it, or left of it where the lane is low. */
+function ringLabel(view: View, ring: { x: number; y: number }, width: number): { x: number; y: number } {
+  const page = isPage(view);
+  const above = ring.y - view.top > 22;
+  // Beside a post's stem rather than on it.
+  if (above && !page && view.picture.posts.some((post) => Math.abs(view.x(post.at) - ring.x) < width / 2)) return { x: Math.min(ring.x + 6, view.right - width), y: ring.y - 20 };
+  if (above) return { x: Math.max(view.left, Math.min(page ? ring.x + 6 : ring.x - width / 2, view.right - width)), y: ring.y - 20 };
+  const low = !page && view.layout.gravity.height < 50 && ring.x - width - 8 > view.left;
+  if (low) return { x: ring.x - width - 8, y: ring.y - 6 };
+  return { x: Math.min(ring.x + (page ? 10 : 7), view.right - width), y: ring.y + 5 };
+}
+
+const bracketRise = (view: View, { kind }: Pick<Bracket, 'kind'>): number => (isPage(view) ? 30 : kind === 'equal' ? 24 : 10);
+
 /** Hydrometer readings, with their figures where there is room. */
 export const rings: Mark = (view) => {
   const { context, palette, layout, picture } = view;
@@ -32,17 +46,15 @@ export const rings: Mark = (view) => {
   if (layout.style === 'lane' && layout.height < 60) return;
   setText(view, palette.ink, page ? 600 : 500, page ? 1 : 0.96);
   context.textAlign = 'left';
-  const labels = shown.map((item): Label => {
-    const width = context.measureText('1.000').width;
-    const first = page || item !== shown[0] || picture.bed === null;
-    // Over the ring in a lane, over and right of it on a page; at the right of a ring that touches the top.
-    const above = item.y - view.top > 22;
-    const x = page ? item.x + (above && first ? 6 : 10) : above ? item.x - width / 2 : item.x + 7;
-    return { x: Math.max(view.left, Math.min(x, view.right - width)), y: above ? item.y - 20 : item.y + 5, width, height: 13 };
-  });
+  const width = context.measureText('1.000').width;
+  const labels = shown.map((item): Label => ({ ...ringLabel(view, item, width), width, height: 13 }));
   const nowX = view.x(picture.now);
   const taken: Label[] = [{ x: nowX - 6, y: view.top, width: page ? 90 : 8, height: 18 }];
-  if (picture.bracket && page) taken.push({ x: view.x(picture.bracket.from), y: view.y(layout.gravity, picture.bracket.gravity) - 40, width: 90, height: 20 });
+  if (picture.bracket) {
+    const x = Math.max(view.left, view.x(picture.bracket.from));
+    const y = view.y(layout.gravity, picture.bracket.gravity) - bracketRise(view, picture.bracket);
+    taken.push({ x: x - 2, y: y - 16, width: Math.max(90, view.x(picture.bracket.to) - x), height: picture.bracket.kind === 'flat' ? 22 : 14 });
+  }
   for (const index of keepClear(labels, taken)) {
     const label = labels[index]!;
     context.fillText(shown[index]!.gravity.toFixed(3), label.x, label.y + 7);
@@ -108,7 +120,7 @@ export const bracket: Mark = (view) => {
   const left = Math.max(view.left, view.x(from));
   const right = Math.min(view.right, view.x(to));
   if (right - left < 4) return;
-  const y = view.y(layout.gravity, gravity) - (page ? 30 : kind === 'equal' ? 24 : 10);
+  const y = view.y(layout.gravity, gravity) - bracketRise(view, { kind });
   const colour = kind === 'flat' ? palette.ochre : palette.green;
   context.strokeStyle = colour;
   context.lineWidth = page ? 1.8 : 1.5;
@@ -149,7 +161,7 @@ export const likelyEnd: Mark = (view) => {
   if (layout.height < 46) return;
   const beyond = from > right - 4;
   setText(view, beyond ? palette.ink2 : palette.ink, 500, 0.96);
-  context.fillText(beyond ? `to ${words} ›` : words, Math.min(Math.max(to, view.x(picture.now) + 190), right - 4), view.bottom - 13);
+  context.fillText(beyond ? `to ${words} ›` : words, Math.min(Math.max(to, view.x(picture.now) + 190), right - 4), view.bottom - (layout.height < 70 ? 8 : 13));
 };
 
 export const bedWords: Mark = (view) => {
@@ -271,7 +283,7 @@ function figuresNow(view: View, x: number, timeZone: string): void {
     const lane = layout.style === 'lane';
     setText(view, palette.mercury, lane ? 500 : 600, lane ? 0.96 : 1);
     const value = picture.readings.temperature.findLast((item) => item !== null) ?? layout.temperature.min;
-    put(words, lane ? view.bottom - 13 : Math.min(view.y(layout.temperature, value), view.top + layout.temperature.top + layout.temperature.height - 4));
+    put(words, lane ? view.bottom - (layout.height < 70 ? 8 : 13) : Math.min(view.y(layout.temperature, value), view.top + layout.temperature.top + layout.temperature.height - 4));
   }
   const gas = picture.gas.findLast((bin) => bin.at <= picture.now);
   if (layout.gas && gas && picture.silentAt === null) {

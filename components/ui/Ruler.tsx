@@ -41,7 +41,7 @@ export function Ruler({ name, value, says, limit, limitSays, good, state, from, 
   return (
     <div role="img" aria-label={`${name}: ${says}${over}${limit === null ? '' : `; limit ${limitSays}`}`} className="my-1 font-mono">
       <div className="flex items-baseline justify-between gap-3 text-[0.75rem] leading-[1.125rem] text-ink2" aria-hidden>
-        <span className={`font-semibold ${colour}`} style={{ marginLeft: `min(${pointer}%, 60%)` }}>
+        <span className={`whitespace-nowrap font-semibold ${colour}`} style={{ marginLeft: `min(${pointer}%, 60%)` }}>
           {says}
         </span>
         <span className="text-right text-[0.6875rem]">{name}</span>
