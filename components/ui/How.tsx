@@ -1,47 +1,44 @@
-'use client';
+import type { How as HowAnswer } from '@/lib/core/how/how';
+import { Sentence } from './Sentence';
 
-import { useId } from 'react';
-import type { How as Origin } from '@/lib/core/how/how';
+/** How far a source may be trusted, as the reader is told. */
+const STATUS_WORDS: Record<HowAnswer['status'], string> = {
+  published: 'published',
+  'common practice': 'common practice',
+  'our own rule': 'a rule of this program',
+  'from memory': 'recalled, not checked',
+  told: 'told by you',
+};
 
-const figure = (value: number | string | null) => (value === null ? 'not known' : typeof value === 'number' ? String(Number(value.toPrecision(5))).replace(/^-/, '−') : value);
+const inputText = (value: number | string | null): string => (value === null ? 'not told' : typeof value === 'number' ? String(Number(value.toPrecision(6))).replace('-', '−') : value);
 
-/** "How?" beside a figure: its formula, what went in, where it comes from and how far that may be trusted. */
-export function How({ of, how, className = '' }: { of: string; how: Origin; className?: string }) {
-  const id = useId();
+/** Every figure can be asked "how?": its formula, what went into it, and where the formula is from. */
+export function How({ how, of, className = '' }: { how: HowAnswer; /** Which figure, for those who hear the page. */ of: string; className?: string }) {
   return (
-    <>
-      <button
-        type="button"
-        popoverTarget={id}
-        aria-label={`How: ${of}`}
-        className={`type-tick inline-flex items-center whitespace-nowrap text-ink2 underline decoration-dotted underline-offset-4 hover:text-ink max-strip:min-h-11 max-strip:px-1 not-printed ${className}`}
-      >
-        how?
-      </button>
-      <div id={id} popover="auto" role="dialog" aria-label={`How: ${of}`} className="m-auto max-h-[80dvh] w-[min(30rem,calc(100vw-2rem))] overflow-auto whitespace-normal border-[1.5px] border-ink bg-lit p-4 text-left text-ink backdrop:bg-ink/35">
-        <div className="flex items-baseline justify-between gap-4 border-b pb-2">
-          <p className="type-sub">{of}</p>
-          <button type="button" popoverTarget={id} popoverTargetAction="hide" className="type-label min-h-8 text-ink underline underline-offset-4">
-            Close
-          </button>
-        </div>
-        <p className="type-label break-words border-b border-rule py-2">{how.formula}</p>
+    <details className={`group/how not-printed min-w-0 ${className}`}>
+      <summary className="type-tick inline-flex min-h-11 cursor-pointer list-none items-center text-ink2 underline decoration-rule2 underline-offset-2 hover:text-ink strip:min-h-6 [&::-webkit-details-marker]:hidden">
+        how?<span className="heard-only"> {of}</span>
+      </summary>
+      <div className="mb-2 border-l-[3px] border-rule2 pl-3">
+        <p className="type-reason">
+          <Sentence>{how.formula}</Sentence>
+        </p>
         {how.inputs.length > 0 && (
-          <dl className="type-label grid grid-cols-[minmax(0,1fr)_auto] gap-x-4 border-b border-rule py-2">
+          <dl className="type-label my-1 grid grid-cols-[auto_minmax(0,1fr)] gap-x-3 text-ink2">
             {how.inputs.map((input) => (
               <div key={input.name} className="contents">
-                <dt className="text-ink2">{input.name}</dt>
-                <dd className="text-right">
-                  {figure(input.value)} {input.value === null ? '' : input.unit}
+                <dt>{input.name}</dt>
+                <dd className="break-words text-ink">
+                  {inputText(input.value)} {input.value === null ? '' : input.unit}
                 </dd>
               </div>
             ))}
           </dl>
         )}
-        <p className="type-reason pt-2 text-ink2">
-          {how.source} <span className="type-label whitespace-nowrap">({how.status})</span>
+        <p className="type-tick text-ink2">
+          {STATUS_WORDS[how.status]}: {how.source}
         </p>
       </div>
-    </>
+    </details>
   );
 }

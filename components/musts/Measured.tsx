@@ -1,0 +1,127 @@
+'use client';
+
+import { useState } from 'react';
+import { points, typedGravity, typedNumber } from '@/components/batch/figures';
+import { Box } from '@/components/ui/Box';
+import { Choice } from '@/components/ui/Choice';
+import { Field } from '@/components/ui/Field';
+import { How } from '@/components/ui/How';
+import { Sentence } from '@/components/ui/Sentence';
+import { State } from '@/components/ui/StateMark';
+import { camelKeys } from '@/lib/contracts/case';
+import type { MustBody } from '@/lib/contracts/musts';
+import { gapOf, measuredOriginal, type Measurement } from '@/lib/core/must/original-gravity';
+import { pitchChecklist } from '@/lib/core/must/pitch';
+import type { Range } from '@/lib/core/units/range';
+import { ends } from './words';
+
+const isNumber = (value: number | null): value is number => value !== null && Number.isFinite(value);
+
+function measurementOf(instrument: Measurement['with'], reading: string, sample: string, calibration: string): Measurement | null {
+  const sampleC = typedNumber(sample);
+  if (instrument === 'hydrometer') {
+    const shown = typedGravity(reading);
+    const calibrationC = typedNumber(calibration);
+    return isNumber(shown) && shown >= 0.97 && shown <= 1.2 && isNumber(sampleC) && isNumber(calibrationC) && calibrationC >= 0 && calibrationC <= 40 ? { with: 'hydrometer', reading: shown, sampleC, calibrationC } : null;
+  }
+  const brix = typedNumber(reading);
+  return isNumber(brix) && brix >= 0 && brix <= 45 && !Number.isNaN(sampleC) ? { with: 'refractometer', brix, sampleC } : null;
+}
+
+const GAP_WORDS = { as_expected: 'As the sheet promised', lower: 'Lower than promised', higher: 'Higher than promised' } as const;
+
+function Gap({ expected, measured }: { expected: Range; measured: Range }) {
+  const gap = gapOf(expected, measured);
+  return (
+    <div className="mt-2">
+      <State state={gap.verdict === 'as_expected' ? 'Ready' : 'Check'} word={GAP_WORDS[gap.verdict]} />
+      <p className="type-body mt-1">
+        <Sentence>{`Promised ${ends(expected, 3)}; ${points(gap.points)} from the middle of it.`}</Sentence>
+      </p>
+      {gap.causes.length > 0 && (
+        <ul className="mt-1 list-disc pl-5">
+          {gap.causes.map((cause) => (
+            <li key={cause} className="type-reason">
+              <Sentence>{cause}</Sentence>
+            </li>
+          ))}
+        </ul>
+      )}
+    </div>
+  );
+}
+
+/** The original gravity as measured, against what was promised; then the pitch, step by step. */
+export function Measured({ must }: { must: MustBody }) {
+  const [instrument, setInstrument] = useState<Measurement['with']>('hydrometer');
+  const [reading, setReading] = useState('');
+  const [sample, setSample] = useState('20');
+  const [calibration, setCalibration] = useState('20');
+  const [mustC, setMustC] = useState('');
+  const [dry, setDry] = useState('');
+  const [ticked, setTicked] = useState<ReadonlySet<string>>(new Set());
+  const measurement = measurementOf(instrument, reading, sample, calibration);
+  const measured = measurement && measuredOriginal(measurement);
+  const expected = must.result.ok ? must.result.outcome.gravity_at_pitch.value : null;
+  const temperature = typedNumber(mustC);
+  const grams = typedNumber(dry);
+  const check = pitchChecklist({ yeast: must.sheet.yeast && camelKeys(must.sheet.yeast), dryYeastG: isNumber(grams) && grams > 0 ? grams : null, mustC: isNumber(temperature) ? temperature : null, glass: true, sulphitedHoursAgo: null });
+
+  return (
+    <div className="flex flex-col gap-6">
+      <section aria-labelledby="measured" className="flex flex-col gap-3">
+        <h3 id="measured" className="type-verdict-now">
+          Original gravity
+        </h3>
+        <Choice label="Read with" bare value={instrument} onChoose={setInstrument} options={[{ value: 'hydrometer', name: 'Hydrometer' }, { value: 'refractometer', name: 'Refractometer' }]} />
+        <Field label={instrument === 'hydrometer' ? 'Gravity as read' : 'As read'} unit={instrument === 'hydrometer' ? 'SG' : '°Bx'} inputMode="decimal" autoComplete="off" placeholder={instrument === 'hydrometer' ? '1.062' : '15.2'} value={reading} onChange={(event) => setReading(event.target.value)} />
+        <div className="grid grid-cols-2 gap-3">
+          <Field label="Sample" unit="°C" inputMode="decimal" autoComplete="off" value={sample} onChange={(event) => setSample(event.target.value)} hint={instrument === 'refractometer' ? 'Empty: it corrects itself.' : undefined} />
+          {instrument === 'hydrometer' && <Field label="Hydrometer made for" unit="°C" inputMode="decimal" autoComplete="off" value={calibration} onChange={(event) => setCalibration(event.target.value)} hint="20, or 15.56 on older ones." />}
+        </div>
+        <div aria-live="polite">
+          {measured && !measured.ok && <p className="type-body border-l-[3px] border-madder pl-3"><Sentence>{measured.sentence}</Sentence></p>}
+          {measured?.ok && (
+            <>
+              <p className="type-verdict-now">
+                At 20 °C: <span className="fig-strong">{measured.gravity.value.value.toFixed(4)}</span> <span className="type-label text-ink2">{ends(measured.gravity.value, 4)}</span>
+              </p>
+              <How how={measured.gravity.how} of="the corrected gravity" />
+              {expected && <Gap expected={expected} measured={measured.gravity.value} />}
+            </>
+          )}
+        </div>
+      </section>
+      <section aria-labelledby="pitch" className="flex flex-col gap-3 border-t-[1.5px] border-ink pt-4">
+        <h3 id="pitch" className="type-verdict-now">
+          Pitch, step by step
+        </h3>
+        <div className="grid grid-cols-2 gap-3">
+          <Field label="Must now" unit="°C" inputMode="decimal" autoComplete="off" value={mustC} onChange={(event) => setMustC(event.target.value)} />
+          <Field label="Dry yeast" unit="g" inputMode="decimal" autoComplete="off" value={dry} onChange={(event) => setDry(event.target.value)} />
+        </div>
+        <div aria-live="assertive">
+          {check.stops.map((stop) => (
+            <p key={stop} className="type-body flex items-start gap-2 border-l-[3px] border-madder bg-lit py-2 pl-3">
+              <State state="Stop" size={15} />
+              <span><Sentence>{stop}</Sentence></span>
+            </p>
+          ))}
+        </div>
+        <ol className="flex flex-col">
+          {check.steps.map((step) => (
+            <li key={step.key} className="border-b border-rule py-2">
+              <Box ticked={ticked.has(step.key)} notYet={step.key === 'pitch' && check.stops.length > 0} onTick={(on) => setTicked((keys) => { const next = new Set(keys); if (on) next.add(step.key); else next.delete(step.key); return next; })}>
+                <span className="type-body">
+                  <Sentence>{step.sentence}</Sentence>
+                  {step.caution && <span className="type-reason block text-ink2"><Sentence>{step.caution}</Sentence></span>}
+                </span>
+              </Box>
+            </li>
+          ))}
+        </ol>
+        <How how={check.how} of="the checklist" />
+      </section>
+    </div>
+  );
+}
