@@ -77,7 +77,7 @@ export async function bottleBatch(actor: Actor, batchId: string, input: BottleBa
 
     const lot = await writeLot({ actor, batch, input, state, request, judged, at, now, standsC: place?.temperatureC ?? input.cellar_c }, transaction);
     await writeBottles(lot, judged, input.place_id, transaction);
-    await emptyVessel(actor, batch, input, lot, judged, at, transaction);
+    await emptyVessel({ actor, batch, input, judged, at, now }, lot, transaction);
     await lotJobs({ lot, primed: primes(request), overridden: judged.verdict === 'overridden', now }, transaction);
     await auditBy(actor, judged.verdict === 'overridden' ? 'lot.bottled-against-a-stop' : 'lot.bottled', lot.id, { batch: batchId, code: lot.code, bottles: judged.plan.bottles, reason: judged.verdict === 'overridden' ? judged.reason : null }, transaction);
     await notifyChange({ cellar: actor.cellarId, kind: 'lot', batch: batchId }, transaction);
@@ -185,14 +185,13 @@ async function writeBottles(lot: Lot, judged: Allowed, placeId: string | null, t
 }
 
 /** The batch is over, or goes on with what is left. */
-async function emptyVessel(actor: Actor, batch: Batch, input: BottleBatchForm, lot: Lot, judged: Allowed, at: Date, transaction: Transaction): Promise<void> {
+async function emptyVessel({ actor, batch, input, judged, at, now }: Omit<Bottling, 'state' | 'request' | 'standsC'>, lot: Lot, transaction: Transaction): Promise<void> {
   const gone = judged.plan.bottledL + judged.plan.lostL;
   const entry = await Entry.create(
     { cellarId: batch.cellarId, batchId: batch.id, kind: 'bottling', at, volumeL: input.ends_batch ? judged.plan.bottledL : Math.min(gone, batch.volumeL), text: `Lot ${lot.code}.`, detail: { lot_id: lot.id, left_l: judged.plan.lostL }, personId: actor.personId, clientId: input.client_id },
     { transaction },
   );
-  await entry.reload({ transaction });
-  await answerJobs(actor, batch, entry, transaction);
+  await answerJobs(actor, batch, entry, now, transaction);
   if (!input.ends_batch) return lessen(batch, Math.min(gone, batch.volumeL), at, transaction);
   await batch.update({ state: 'ended', endedAt: at, updatedAt: at }, { transaction });
   await takeOut({ batchId: batch.id }, at, transaction);

@@ -118,7 +118,7 @@ export async function createEntry(actor: Actor, batchId: string, input: CreateEn
       );
       // The times that the database writes by itself.
       await created.reload({ transaction });
-      await answerJobs(actor, batch, created, transaction);
+      await answerJobs(actor, batch, created, new Date(clock.now()), transaction);
       await auditBy(actor, 'entry.created', created.id, { batch: batchId, kind: input.kind }, transaction);
       await notifyChange({ cellar: actor.cellarId, kind: 'entry', batch: batchId }, transaction);
       return created;

@@ -19,8 +19,8 @@ import { contentsIn, inflowOf, loadBatches, notAhead, pourIn, sentBefore, shownR
 
 const SLACK_L = 1e-6;
 
-/** Lines of one act stand in the log a millisecond apart, so that their order can be told: first over, then topped up, then sulphited. */
-const later = (at: Date, steps = 1) => new Date(at.getTime() + steps);
+/** Lines of one act stand in the log a millisecond apart, so that their order can be told: first over, then topped up, then sulphited; the last one at the time told. */
+const earlier = (at: Date, steps: number) => new Date(at.getTime() - steps);
 
 interface Poured {
   entries: Entry[];
@@ -81,16 +81,16 @@ export function rackBatch(actor: Actor, batchId: string, input: RackForm, clock:
       { transaction },
     );
     const racked = await Entry.create(
-      { cellarId: batch.cellarId, batchId, kind: 'rack', at, volumeL: over, neck: input.vessel.neck ?? null, text: input.text, detail: { left_l: input.left_l }, personId: actor.personId, clientId: input.client_id },
+      { cellarId: batch.cellarId, batchId, kind: 'rack', at: earlier(at, input.top_up.length + 1), volumeL: over, neck: input.vessel.neck ?? null, text: input.text, detail: { left_l: input.left_l }, personId: actor.personId, clientId: input.client_id },
       { transaction },
     );
-    const entries = [racked, ...(await pourAll(actor, batch, inflows, input.top_up, later(at), transaction))];
+    const entries = [racked, ...(await pourAll(actor, batch, inflows, input.top_up, earlier(at, 1), transaction))];
     if (input.sulphite_g) {
       entries.push(
-        await Entry.create({ cellarId: batch.cellarId, batchId, kind: 'addition', at: later(at, input.top_up.length + 1), detail: { substance: 'sulphite', ingredient: 'potassium-metabisulphite', name: 'potassium metabisulphite', grams: input.sulphite_g }, personId: actor.personId }, { transaction }),
+        await Entry.create({ cellarId: batch.cellarId, batchId, kind: 'addition', at, detail: { substance: 'sulphite', ingredient: 'potassium-metabisulphite', name: 'potassium metabisulphite', grams: input.sulphite_g }, personId: actor.personId }, { transaction }),
       );
     }
-    await answerJobs(actor, batch, racked, transaction);
+    await answerJobs(actor, batch, racked, new Date(clock.now()), transaction);
     await auditBy(actor, 'batch.racked', batchId, { left: input.left_l, topUps: input.top_up.length }, transaction);
     return { entries, effect };
   });
@@ -111,7 +111,7 @@ export function topUpBatch(actor: Actor, batchId: string, input: TopUpBatchForm,
 
 async function pourAll(actor: Actor, batch: Batch, inflows: readonly Inflow[], topUps: readonly TopUpForm[], at: Date, transaction: Transaction): Promise<Entry[]> {
   const entries: Entry[] = [];
-  for (const [index, inflow] of inflows.entries()) entries.push(await pourIn(actor, batch, inflow, topUps[index]!, later(at, index), transaction));
+  for (const [index, inflow] of inflows.entries()) entries.push(await pourIn(actor, batch, inflow, topUps[index]!, earlier(at, inflows.length - 1 - index), transaction));
   const litres = inflows.reduce((sum, inflow) => sum + inflow.litres, 0);
   if (litres > 0) await batch.update({ volumeL: Math.min(batch.vesselL, batch.volumeL + litres) }, { transaction });
   return entries;

@@ -7,11 +7,11 @@ import { notifyChange } from '../changes';
 const ANSWERS: Partial<Record<string, string[]>> = { reading: ['reading'], neck: ['neck', 'airlock'], rack: ['rack'], bottling: ['bottle'] };
 
 /** The program's jobs that an entry answers are done with it: nobody ticks what they have just logged. */
-export async function answerJobs(actor: Pick<Actor, 'personId' | 'cellarId'>, batch: Pick<Batch, 'id'>, entry: Pick<Entry, 'kind' | 'createdAt'>, transaction: Transaction): Promise<void> {
+export async function answerJobs(actor: Pick<Actor, 'personId' | 'cellarId'>, batch: Pick<Batch, 'id'>, entry: Pick<Entry, 'kind'>, now: Date, transaction: Transaction): Promise<void> {
   const kinds = ANSWERS[entry.kind];
   if (!kinds) return;
   const [count] = await Job.update(
-    { doneAt: entry.createdAt ?? new Date(), doneBy: actor.personId },
+    { doneAt: now, doneBy: actor.personId },
     { where: { batchId: batch.id, kind: kinds, source: { [Op.in]: ['call', 'schedule'] }, doneAt: null, droppedAt: null }, transaction },
   );
   if (count > 0) await notifyChange({ cellar: actor.cellarId, kind: 'job', batch: batch.id }, transaction);
