@@ -100,7 +100,7 @@ export function tables(ours: Summary, naive: Summary): string {
     const met = a.recall >= goal.recall - 0.005 && a.falsePerMonth <= goal.falseAlarms + 0.0005 && (goal.delay === null || a.delayMedian <= goal.delay);
     lines.push(
       `${decision.padEnd(17)} ${String(a.moments).padEnd(4)} ${two(b.recall)} ${two(b.falsePerMonth).padStart(5)} | ${two(a.recall)} (${two(a.soundRecall)})  ${a.falsePerMonth.toFixed(3)}  ${one(a.delayMedian)}/${one(a.delayP90)}`.padEnd(76) +
-        `| >= ${goal.recall}, <= ${goal.falseAlarms}${goal.delay === null ? '' : `, <= ${goal.delay} h`}: ${verdict(met)}`,
+        `| >= ${goal.recall}, <= ${goal.falseAlarms}${goal.delay === null ? '' : `, <= ${goal.delay} h`}: ${a.moments === 0 ? 'no case' : verdict(met)}`,
     );
   }
   lines.push('', 'whole batches with a wrong statement at any look        thumb  ours  goal');
