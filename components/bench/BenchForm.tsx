@@ -1,0 +1,94 @@
+'use client';
+
+import { Choice } from '@/components/ui/Choice';
+import { Field, Select } from '@/components/ui/Field';
+import type { BenchFacts } from '@/lib/contracts/bench';
+import { Bottles } from './Bottles';
+import type { BenchDraft, BenchErrors, SugarWay, WeighedSugar } from './draft';
+import { SUGAR_WORDS } from './words';
+
+const WAYS: readonly { value: SugarWay; name: string }[] = [
+  { value: 'none', name: 'none' },
+  { value: 'weighed', name: 'by weight' },
+  { value: 'syrup', name: 'syrup' },
+  { value: 'drops', name: 'drops' },
+];
+const FIZZ: readonly { volumes: number; name: string }[] = [
+  { volumes: 2, name: 'lightly sparkling' },
+  { volumes: 2.8, name: 'sparkling' },
+];
+const TOP = 4;
+const BOTTOM = 1;
+
+function Fizz({ volumes, onChange }: { volumes: number; onChange: (volumes: number) => void }) {
+  return (
+    <div className="flex flex-col gap-1">
+      <label htmlFor="fizz" className="type-label flex justify-between gap-3 text-ink2">
+        wanted fizz <span className="font-semibold text-ink">{volumes.toFixed(1)} volumes</span>
+      </label>
+      <input id="fizz" type="range" min={BOTTOM} max={TOP} step={0.1} value={volumes} onChange={(event) => onChange(Number(event.target.value))} aria-valuetext={`${volumes.toFixed(1)} volumes`} className="h-11 w-full accent-(--ink) strip:h-7" />
+      <div className="flex flex-wrap gap-2">
+        {FIZZ.map((fizz) => (
+          <button key={fizz.name} type="button" aria-pressed={volumes === fizz.volumes} onClick={() => onChange(fizz.volumes)} className={`type-label min-h-11 rounded border px-3 strip:min-h-[30px] ${volumes === fizz.volumes ? 'border-ink bg-ink text-on' : 'border-ink3 text-ink hover:bg-desk'}`}>
+            {fizz.name} {fizz.volumes.toFixed(1)}
+          </button>
+        ))}
+      </div>
+    </div>
+  );
+}
+
+/** What is asked of the bench; all that is known from the log is not asked. */
+export function BenchForm({ draft, errors, facts, onChange }: { draft: BenchDraft; errors: BenchErrors; facts: BenchFacts; onChange: (part: Partial<BenchDraft>) => void }) {
+  const measured = facts.warmest_since_end_c;
+  return (
+    <div className="flex flex-col gap-4">
+      <Bottles draft={draft} errors={errors} onChange={(bottles) => onChange({ bottles })} />
+      <div className="grid grid-cols-2 gap-3 border-t pt-3">
+        <Field label="in the vessel" unit="L" inputMode="decimal" value={draft.volume} error={errors.volume_l} onChange={(event) => onChange({ volume: event.target.value })} />
+        <Field label="left on lees" unit="L" inputMode="decimal" value={draft.losses} error={errors.losses_l} onChange={(event) => onChange({ losses: event.target.value })} />
+      </div>
+      <div className="grid grid-cols-2 gap-3 border-t pt-3">
+        <Field label="cellar" unit="°C" inputMode="decimal" value={draft.cellar} error={errors.cellar_c} onChange={(event) => onChange({ cellar: event.target.value })} />
+        <Field label="warmest they stand" unit="°C" inputMode="decimal" value={draft.warmest} error={errors.warmest_store_c} onChange={(event) => onChange({ warmest: event.target.value })} />
+        <Field
+          className="col-span-2"
+          label="warmest since it finished"
+          unit="°C"
+          inputMode="decimal"
+          value={draft.warmestSinceEnd}
+          error={errors.warmest_since_end_c}
+          hint={measured === null ? 'No sensor measured it. If in doubt, say it colder: cold drink holds more gas.' : `The sensor measured ${measured.toFixed(1)} °C; the colder of the two is used.`}
+          onChange={(event) => onChange({ warmestSinceEnd: event.target.value })}
+        />
+      </div>
+      <div className="flex flex-col gap-3 border-t pt-3">
+        <Choice label="sugar for fizz" value={draft.way} options={WAYS} onChoose={(way) => onChange({ way })} />
+        {draft.way === 'weighed' && (
+          <Select label="which sugar" value={draft.sugar} onChange={(event) => onChange({ sugar: event.target.value as WeighedSugar })}>
+            {(Object.keys(SUGAR_WORDS) as WeighedSugar[]).map((sugar) => (
+              <option key={sugar} value={sugar}>
+                {SUGAR_WORDS[sugar]}
+              </option>
+            ))}
+          </Select>
+        )}
+        {draft.way === 'syrup' && <Field label="sugar in the syrup, by weight" unit="%" inputMode="decimal" value={draft.syrupShare} error={errors['priming.syrup_share']} onChange={(event) => onChange({ syrupShare: event.target.value })} />}
+        {draft.way === 'drops' && (
+          <Field
+            label="one drop weighs"
+            unit="g"
+            inputMode="decimal"
+            placeholder="2 to 3"
+            value={draft.dropGrams}
+            error={errors['priming.grams_each.lo']}
+            hint="Weigh ten of yours. One for 250 ml and three for 750 ml is usual."
+            onChange={(event) => onChange({ dropGrams: event.target.value })}
+          />
+        )}
+        {(draft.way === 'weighed' || draft.way === 'syrup') && <Fizz volumes={draft.volumes} onChange={(volumes) => onChange({ volumes })} />}
+        {draft.way === 'none' && <p className="type-reason text-ink2">Dry and still: no sugar goes in.</p>}
+      </div>
+    </div>
+  );
+}

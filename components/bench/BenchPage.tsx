@@ -1,0 +1,181 @@
+'use client';
+
+import { useMemo, useState } from 'react';
+import Link from 'next/link';
+import type { CSSProperties } from 'react';
+import { drinkHex } from '@/components/charts/palette';
+import { FilterTabs } from '@/components/ui/FilterTabs';
+import { Haze } from '@/components/ui/Haze';
+import { EmptyState, ErrorState } from '@/components/ui/Notice';
+import { LinkButton } from '@/components/ui/Button';
+import { useNow } from '@/components/ui/now';
+import { Vessel } from '@/components/vessel/Vessel';
+import type { VesselState } from '@/components/vessel/describe';
+import { useBench } from '@/lib/client/lots';
+import { useMe } from '@/lib/client/me';
+import type { BenchFacts } from '@/lib/contracts/bench';
+import type { BenchRequest, BenchVerdict, BottlePicture } from '@/lib/core/bottling/bench';
+import { PRESSURE_CAUTIONS } from '@/lib/core/bottling/bottles';
+import { drinkPressure } from '@/lib/core/bottling/co2';
+import { pressureByDay } from '@/lib/core/bottling/conditioning';
+import { judgeBench } from '@/lib/core/bottling/verdict';
+import { BenchForm } from './BenchForm';
+import { BottleIt } from './BottleIt';
+import { BottleTable } from './BottleTable';
+import { Done } from './Done';
+import { formOf, newDraft, requestOf, takeWay } from './draft';
+import { limitOf, scaleTop, Tubes } from './Tubes';
+import { Verdict, Ways } from './Verdict';
+import { Weeks } from './Weeks';
+import { SHORT_BOTTLE, sizeWords } from './words';
+
+/** The bench of one batch. */
+export function BenchPage({ id }: { id: string }) {
+  const { facts, error, retry } = useBench(id);
+  const { me, may } = useMe();
+  if (error && !facts) {
+    return (
+      <ErrorState title="The bench did not load" onRetry={retry}>
+        {error.message} Nothing is filled until it is judged here.
+      </ErrorState>
+    );
+  }
+  if (!facts || !me) return <Haze height={420} label="Loading the bench" className="m-(--margin)" />;
+  if (facts.batch.state === 'ended') {
+    return (
+      <EmptyState title={`${facts.batch.name} has ended`} action={<LinkButton href="/bench">Another batch</LinkButton>}>
+        Nothing is left in the vessel to bottle.
+      </EmptyState>
+    );
+  }
+  return <Bench key={facts.batch.id} facts={facts} timeZone={me.cellar.time_zone} mayBottle={may('lots.bottle')} mayOverride={may('lots.override')} />;
+}
+
+const drawn = ({ batch, done }: BenchFacts): VesselState => ({
+  kind: batch.vessel_kind as VesselState['kind'],
+  neck: batch.neck as VesselState['neck'],
+  level: Math.min(1, batch.volume_l / batch.vessel_l),
+  drink: batch.drink_colour,
+  clearness: done.verdict === 'done' ? 'bright' : 'hazy',
+  krausen: false,
+  lees: 'thin',
+  tag: batch.tag,
+  silent: false,
+});
+
+interface BenchProps {
+  facts: BenchFacts;
+  timeZone: string;
+  mayBottle: boolean;
+  mayOverride: boolean;
+}
+
+function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
+  const [draft, setDraft] = useState(() => newDraft(facts));
+  const { form, errors } = useMemo(() => formOf(draft, facts), [draft, facts]);
+  const request = useMemo(() => form && requestOf(form, facts), [form, facts]);
+  const verdict = useMemo(() => request && judgeBench(request), [request]);
+  const { batch, done } = facts;
+  return (
+    <div className="drink wide:grid wide:min-h-[calc(100dvh-var(--header))] wide:grid-cols-[412px_minmax(0,1fr)] wide:grid-rows-[auto_1fr]" style={{ '--drink': drinkHex(batch.drink_colour) } as CSSProperties}>
+      <div className="bg-desk px-(--margin) py-3 max-wide:border-b-[1.5px] max-wide:border-ink wide:border-r-[1.5px] wide:border-ink">
+        <h1 className="type-head">Bottling bench</h1>
+        <div className="flex items-center gap-4 pt-1">
+          <Vessel vessel={drawn(facts)} height={64} silentPicture />
+          <div className="min-w-0">
+            <p className="type-sub truncate">
+              <Link href={`/batches/${batch.id}`} className="no-underline hover:underline">
+                {batch.name}
+              </Link>
+            </p>
+            <p className="type-label text-ink2">
+              {batch.tag !== null && `tag ${batch.tag}, `}
+              {done.gravity === null ? 'not read by hand' : `${done.gravity.toFixed(3)} by hand`}
+              <br />
+              {done.remaining === null ? 'what may still ferment is not known' : `may still ferment: ${done.remaining.value.hi.toFixed(1)} points`}
+            </p>
+          </div>
+        </div>
+      </div>
+      <div className="border-b-[1.5px] border-ink">{verdict ? <Verdict verdict={verdict} /> : <p className="type-verdict-now px-(--margin) py-6">Something on the bench is not filled in.</p>}</div>
+      <div className="bg-desk px-(--margin) pb-4 wide:border-r-[1.5px] wide:border-ink">
+        <Done facts={facts} timeZone={timeZone} />
+        <BenchForm draft={draft} errors={errors ?? {}} facts={facts} onChange={(part) => setDraft((before) => ({ ...before, ...part }))} />
+        <div className="mt-4">
+          <BottleIt facts={facts} form={form} verdict={verdict} mayBottle={mayBottle} mayOverride={mayOverride} />
+        </div>
+      </div>
+      <div className="min-w-0 max-wide:border-t-[1.5px] max-wide:border-ink">
+        {verdict && request && <Pictures verdict={verdict} request={request} timeZone={timeZone} />}
+        {verdict?.verdict === 'stop' && <Ways ways={verdict.ways} onUse={(way) => way.request && setDraft((before) => takeWay(before, way.request!))} />}
+        {verdict && <BottleTable verdict={verdict} />}
+        {facts.for_gas.assumed && <p className="type-reason border-t px-(--margin) py-2 text-ink2">Nobody told the original gravity: strength and sugar are taken at the upper end of what they may be.</p>}
+        <Cautions />
+      </div>
+    </div>
+  );
+}
+
+/** Tubes and weeks of one bottle; the one with the least to spare first. */
+function Pictures({ verdict, request, timeZone }: { verdict: BenchVerdict; request: BenchRequest; timeZone: string }) {
+  const now = useNow();
+  const [chosen, setChosen] = useState<string | null>(null);
+  const bottles = verdict.bottles.toSorted((a, b) => limitOf(a) - a.worst.bar - (limitOf(b) - b.worst.bar));
+  const bottle = bottles.find((one) => one.key === chosen) ?? bottles[0];
+  if (!bottle || now === null) return null;
+  return (
+    <div>
+      {bottles.length > 1 && (
+        <div className="px-(--margin) pt-3">
+          <FilterTabs label="Bottle" value={bottle.key} onChoose={setChosen} tabs={bottles.map((one) => ({ value: one.key, name: `${SHORT_BOTTLE[one.choice.kind]} ${sizeWords(one.choice.sizeMl)}` }))} />
+        </div>
+      )}
+      <BottlePictures bottle={bottle} verdict={verdict} request={request} timeZone={timeZone} now={now} />
+    </div>
+  );
+}
+
+function BottlePictures({ bottle, verdict, request, timeZone, now }: { bottle: BottlePicture; verdict: BenchVerdict; request: BenchRequest; timeZone: string; now: number }) {
+  const { residual, remaining } = verdict;
+  const low = (celsius: number) => Math.max(0, drinkPressure(bottle.volumes.value.lo, celsius, request.drink).gaugeBar);
+  const points = useMemo(
+    () =>
+      pressureByDay(
+        { residualVolumes: residual.value.hi, addedVolumes: Math.max(0, bottle.volumes.value.hi - residual.value.hi), remainingPoints: remaining.value.hi, drink: request.drink },
+        now,
+        request.warmestStoreC,
+      ),
+    [bottle, residual, remaining, request, now],
+  );
+  return (
+    <div className="grid wide:grid-cols-2">
+      <div className="min-w-0 px-(--margin) pt-3">
+        <h3 className="type-label text-ink2">
+          <span className="font-bold text-ink">Pressure in one bottle</span>, three ways
+        </h3>
+        <Tubes bottle={bottle} lows={{ cellar: low(request.cellarC), warm: low(request.warmestStoreC) }} />
+      </div>
+      <div className="min-w-0 px-(--margin) pt-3 wide:border-l">
+        <h3 className="type-label text-ink2">
+          <span className="font-bold text-ink">Week by week</span> at {request.warmestStoreC} °C
+        </h3>
+        <Weeks points={points} limit={limitOf(bottle)} top={scaleTop(bottle)} celsius={request.warmestStoreC} timeZone={timeZone} />
+        <p className="type-reason pb-2 text-ink2">The course in between is a guess; the end is reckoned.</p>
+      </div>
+    </div>
+  );
+}
+
+function Cautions() {
+  return (
+    <section aria-label="Cautions" className="border-t px-(--margin) py-3">
+      <h3 className="type-sub">Before anything is filled</h3>
+      <ul className="type-body max-w-[80ch] list-disc pl-5 text-ink2">
+        {PRESSURE_CAUTIONS.map((caution) => (
+          <li key={caution}>{caution}</li>
+        ))}
+        <li>What may be made, kept and given away is for the law where you live.</li>
+      </ul>
+    </section>
+  );
+}
