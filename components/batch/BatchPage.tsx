@@ -95,8 +95,8 @@ function Loaded({ batch }: { batch: BatchBody }) {
   const series = useSeries(batch.id, asked ? { from: iso(asked.from), to: iso(asked.to), points: POINTS } : { points: POINTS });
   const last = useMemo(() => lastReading(series.series), [series.series]);
   const now = nowOf(nowMs ?? Date.parse(batch.assessment?.at ?? batch.created_at), last?.at ?? null);
-  const { judgement, error: judgementError } = useJudgement(batch.id);
-  const { entries, error: entriesError } = useEntries(batch.id, { limit: 200 });
+  const { judgement, error: judgementError, retry: retryJudgement } = useJudgement(batch.id);
+  const { entries, error: entriesError, retry: retryEntries } = useEntries(batch.id, { limit: 200 });
   const { changes } = useVerdictChanges(batch.id);
 
   const judged = judgement ?? batch.assessment;
@@ -124,7 +124,12 @@ function Loaded({ batch }: { batch: BatchBody }) {
   };
   const first = rows[0] ?? null;
   const close = () => setOpened(null);
-  const trouble = [series.error, judgementError, entriesError].find((error) => error !== undefined);
+  const trouble = [
+    { what: 'The readings', error: series.error },
+    { what: 'The judgement', error: judgementError },
+    { what: 'The log', error: entriesError },
+  ].find(({ error }) => error !== undefined);
+  const retryAll = () => [series.retry, retryJudgement, retryEntries].forEach((retry) => retry());
   const heard = batch.sensor?.last_heard_at ? Date.parse(batch.sensor.last_heard_at) / 1000 : null;
   const day = dayOf(batch.pitched_at, now);
 
@@ -136,7 +141,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
       <PhoneFacts facts={facts} />
       <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px] wide:grid-rows-[auto_1fr]">
         <div className="wide:col-start-1 wide:row-start-1">
-          <Evidence name={batch.name} picture={picture} span={span} whole={whole} onSpan={(next) => setChosen(isWhole(next, whole) ? null : next)} timeZone={timeZone} phone={phone} arriving={series.loading} trouble={trouble ? `${trouble.message} Shown is what was known before.` : null} />
+          <Evidence name={batch.name} picture={picture} span={span} whole={whole} onSpan={(next) => setChosen(isWhole(next, whole) ? null : next)} timeZone={timeZone} phone={phone} arriving={series.loading} trouble={trouble ? `${trouble.what} did not arrive (${trouble.error?.status ? `error ${trouble.error.status}` : 'no answer'}). Shown is what was known before.` : null} onRetry={retryAll} />
         </div>
         <div className="wide:col-start-2 wide:row-span-2 wide:row-start-1 wide:border-l">
           {judged ? (

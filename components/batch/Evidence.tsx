@@ -6,6 +6,7 @@ import { TwinTable } from '@/components/charts/TextTwin';
 import type { Picture, Span } from '@/components/charts/picture';
 import { twinOf } from '@/components/charts/twin';
 import { isWhole, zoomed } from '@/components/charts/zoom';
+import { Button } from '@/components/ui/Button';
 import { Haze } from '@/components/ui/Haze';
 import { ChartKey } from './ChartKey';
 import { cursorLine } from './cursor';
@@ -22,12 +23,13 @@ interface EvidenceProps {
   arriving: boolean;
   /** In place of new readings: why they did not come. */
   trouble: string | null;
+  onRetry: () => void;
 }
 
 const TOOL = 'type-label inline-flex h-11 min-w-11 items-center justify-center rounded border border-ink3 px-2 text-ink hover:bg-desk disabled:border-dashed disabled:text-ink3 strip:h-6 strip:min-w-6';
 
 /** The chart with its key, the line of figures under the cursor, zoom by buttons, and the same numbers as a table. */
-export function Evidence({ name, picture, span, whole, onSpan, timeZone, phone, arriving, trouble }: EvidenceProps) {
+export function Evidence({ name, picture, span, whole, onSpan, timeZone, phone, arriving, trouble, onRetry }: EvidenceProps) {
   const [cursor, setCursor] = useState<number | null>(null);
   const [table, setTable] = useState(false);
   const twin = useMemo(() => twinOf(picture, name, timeZone, 60), [picture, name, timeZone]);
@@ -48,12 +50,15 @@ export function Evidence({ name, picture, span, whole, onSpan, timeZone, phone, 
         </div>
       </div>
       {trouble && (
-        <p role="status" className="type-reason mx-(--margin) mb-1 border-l-[3px] border-ochre pl-3 text-ink2">
+        <div role="status" className="type-reason mx-(--margin) mb-1 flex flex-wrap items-center gap-x-4 gap-y-1 border-l-[3px] border-ochre pl-3 text-ink2">
           {trouble}
-        </p>
+          <Button size="lane" onClick={onRetry}>
+            Try again
+          </Button>
+        </div>
       )}
       <div className="relative">
-        {arriving && <Haze height={phone ? 228 : 336} className="absolute inset-x-0 top-0 z-[1]" label="Loading the readings" />}
+        {arriving && !trouble && <Haze height={phone ? 228 : 336} className="absolute inset-x-0 top-0 z-[1]" label="Loading the readings" />}
         <FallChart picture={picture} span={span} whole={whole} onSpan={onSpan} onCursor={setCursor} timeZone={timeZone} phone={phone} label={twin.sentence} />
       </div>
       <div className="flex items-center gap-2 border-b border-t px-(--margin) py-1.5">

@@ -109,5 +109,8 @@ export function calendarOf(span: Span, timeZone: string, width: number, now: num
   const labels = weekly
     ? groupLabels(days, now, (day) => day.weekday === 'Mon', (day) => ({ top: day.month, bottom: String(day.date) }))
     : groupLabels(days, now, (day) => day.date === 1, (day) => ({ top: day.month, bottom: day.month === 'Jan' ? String(wallTime(day.from, timeZone).year) : '' }));
-  return { labels, rules: labels.map((label) => label.from), weekends: weekly ? weekends : [] };
+  const rules = labels.map((label) => label.from);
+  // A week or month of which the span holds only an end has no room for its name.
+  const least = weekly ? 3.2 * 86_400 : 13 * 86_400;
+  return { labels: labels.filter((label) => label.today || label.to - label.from >= least), rules, weekends: weekly ? weekends : [] };
 }

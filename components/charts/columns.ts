@@ -33,12 +33,11 @@ const TOGETHER = 9;
 const REACHES_NOW_S = 3 * 3600;
 
 /**
- * The level itself, by medians of neighbouring readings, up to now. It stands in
- * for the fit where a batch has stopped: a curve that must also lie flat fits
- * neither part.
+ * The level itself, by medians of neighbouring readings. It stands in for the
+ * fit before the curve begins (a racking or an addition begins a new one), and
+ * where a batch has stopped: a curve that must also lie flat fits neither part.
  */
-function levelOf(picture: Picture): GravityPoint[] {
-  const points = readingsAsCurve(picture);
+function levelOf(points: readonly GravityPoint[], now: number): GravityPoint[] {
   const level: GravityPoint[] = [];
   for (let start = 0; start < points.length; start += TOGETHER) {
     const some = points.slice(start, start + TOGETHER);
@@ -48,7 +47,7 @@ function levelOf(picture: Picture): GravityPoint[] {
     level.push({ at, gravity, lo: gravity, hi: gravity });
   }
   const last = level.at(-1);
-  return last && picture.now - last.at < REACHES_NOW_S ? [...level, { ...last, at: picture.now }] : level;
+  return last && now - last.at < REACHES_NOW_S ? [...level, { ...last, at: now }] : level;
 }
 
 /**
@@ -62,8 +61,9 @@ export function columnsOf(picture: Picture, lane = false): uPlot.AlignedData {
   const { past, coming } = cutAt(fitted ? picture.curve : lane ? readingsAsCurve(picture) : [], knownUntil(picture));
   // Where the batch has stopped, the band belongs to what it should have done.
   const ahead = stopped ? [] : coming;
-  const level = stopped ? levelOf(picture) : [];
-  const solid = level.length > 0 ? level : past;
+  const begins = picture.curve[0]?.at ?? -Infinity;
+  const level = fitted ? levelOf(readingsAsCurve(picture).filter((point) => stopped || point.at < begins), stopped ? picture.now : Infinity) : [];
+  const solid = stopped && level.length > 0 ? level : [...level, ...past];
   const banded = fitted && !stopped ? [...past, ...ahead.slice(1)] : [];
   const tables: Table[] = [
     ascending(table(banded, (point) => point.hi, (point) => point.lo)),

@@ -35,6 +35,15 @@ describe('the columns of a chart', () => {
     expect(shown(data, SERIES.forecast).at(-1)).toBe(NOW + 48 * HOUR);
   });
 
+  it('draw the level of the readings up to where the curve begins anew', () => {
+    const at = Array.from({ length: 40 }, (_, index) => NOW - 60 * HOUR + index * HOUR);
+    const data = columnsOf(picture({ curve: straight(NOW - 20 * HOUR), readings: { at, gravity: at.map(() => 1.07), temperature: at.map(() => null) } }));
+    const solid = shown(data, SERIES.fit);
+    expect(solid[0]).toBe(NOW - 60 * HOUR);
+    expect(solid.at(-1)).toBe(NOW);
+    expect(shown(data, SERIES.bandHigh)[0]).toBe(NOW - 20 * HOUR);
+  });
+
   it('end the solid line where a silent sensor was last heard', () => {
     const data = columnsOf(picture({ curve: straight(), silentAt: NOW - 5 * HOUR }));
     expect(shown(data, SERIES.fit).at(-1)).toBe(NOW - 5 * HOUR);
