@@ -20,10 +20,10 @@ const project = (name: string, options: { timeout: number; parallel: boolean; ne
 export default defineConfig({
   test: {
     projects: [
-      project('unit', { timeout: 20_000, parallel: true, needsDatabase: false }),
-      project('reference', { timeout: 30_000, parallel: true, needsDatabase: false }),
+      project('unit', { timeout: 60_000, parallel: true, needsDatabase: false }),
+      project('reference', { timeout: 60_000, parallel: true, needsDatabase: false }),
       project('evaluation', { timeout: 300_000, parallel: true, needsDatabase: false }),
-      project('integration', { timeout: 60_000, parallel: false, needsDatabase: true }),
+      project('integration', { timeout: 120_000, parallel: false, needsDatabase: true }),
       project('fault', { timeout: 300_000, parallel: false, needsDatabase: true }),
       project('browser', { timeout: 240_000, parallel: false, needsDatabase: true }),
     ],

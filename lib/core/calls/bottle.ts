@@ -2,7 +2,7 @@ import type { Call } from '../types';
 import { VOLUMES_PER_POINT } from '../gas/gas';
 import { BOTTLE_POINTS } from '../stages/watch';
 import { later, sinceOf, when, type Scene } from './scene';
-import { call, evidence, gravityWords, pointsWords, rateWords } from './words';
+import { call, evidence, fallingWords, gravityWords, pointsWords, rateWords } from './words';
 
 /** Points that may still fall, nine times in ten; null without a level. */
 function mostToCome(scene: Scene): number | null {
@@ -25,7 +25,7 @@ export function bottleCall(scene: Scene): Call {
   const figures = [
     ...(level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG')]),
     ...(most === null ? [] : [evidence('may still fall', most, BOTTLE_POINTS, 'points')]),
-    ...(rate ? [evidence('fall', rate.value, 0.5, 'points/d')] : []),
+    ...(rate ? [evidence('fall', Math.max(0, rate.value), 0.5, 'points/d')] : []),
     ...(worst === null ? [] : [evidence('worst extra carbonation', worst, 1, 'volumes')]),
   ];
   const changesIt = `Changes it: ${gravityWords(top)} or less, and at most ${pointsWords(BOTTLE_POINTS)} that may still fall.`;
@@ -69,7 +69,7 @@ export function bottleCall(scene: Scene): Call {
   if (expectedAt !== null && hours !== null && hours <= 96 && watch.terminal.on) {
     return call('soon', `Bottling: from about ${when(scene, expectedAt)}.`, `${gravityWords(level)}, ${rate ? rateWords(rate.value) : 'hardly falling'}; it must hold that long.`, { expectedAt, evidence: figures, changesIt });
   }
-  return call('no', 'Not yet: it still works.', `${gravityWords(level)} now${rate ? `, falling ${rateWords(rate.value)}` : ''}.`, { expectedAt: watch.progress() > 0.65 && !watch.sluggish.on ? expectedAt : null, evidence: figures, changesIt });
+  return call('no', rate !== null && rate.value < 0.05 ? 'Not yet: it must hold longer.' : 'Not yet: it still works.', `${gravityWords(level)} now${rate ? `, ${fallingWords(rate.value)}` : ''}.`, { expectedAt: watch.progress() > 0.65 && !watch.sluggish.on ? expectedAt : null, evidence: figures, changesIt });
 }
 
 /** Hours until the curve has half a point left, and then the days it must hold; null without a curve that ends in the zone. */

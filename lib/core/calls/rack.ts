@@ -1,16 +1,23 @@
 import type { Call } from '../types';
 import { later, sinceOf, when, type Scene } from './scene';
-import { call, evidence, gravityWords, pointsWords, rateWords } from './words';
+import { call, evidence, fallingWords, gravityWords, pointsWords, rateWords } from './words';
+
+/** Racked so shortly before it was ready, it has no lees to come off again (ours). */
+const RACKED_LATELY_MS = 96 * 3_600_000;
 
 /** May it come off the lees? */
 export function rackCall(scene: Scene): Call {
   const { watch, level, rate } = scene;
   const top = watch.zoneTop();
-  const figures = level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG'), ...(rate ? [evidence('fall', rate.value, 2.5, 'points/d')] : [])];
+  const figures = level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG'), ...(rate ? [evidence('fall', Math.max(0, rate.value), 2.5, 'points/d')] : [])];
   const changesIt = `Changes it: ${gravityWords(top)} or less and about 2 points still to come.`;
   if (!watch.started.on) return call(scene.silentH === null ? 'unknown' : 'no', 'Not yet: it has not started.', 'Racking comes at the end of the fall.', { changesIt });
   if (watch.rack.on && level !== null) {
     const since = sinceOf(scene, watch.rack.since);
+    const racked = scene.watch.setup.events.findLast((event) => event.kind === 'rack' && event.at <= scene.at)?.at ?? null;
+    if (racked !== null && since !== null && racked >= since - RACKED_LATELY_MS) {
+      return call('no', `Racked ${when(scene, racked)}.`, `${gravityWords(level)}, ${rate ? rateWords(rate.value) : 'hardly falling'}. It clears on its own now.`, { since: racked, evidence: figures });
+    }
     return call('yes', `May be racked: since ${since === null ? 'now' : when(scene, since)}.`, `${gravityWords(level)}, ${rate ? rateWords(rate.value) : 'hardly falling'}.`, {
       since,
       evidence: figures,
@@ -26,7 +33,7 @@ export function rackCall(scene: Scene): Call {
   if (hours !== null && expectedAt !== null && hours <= 72 && watch.peaked.on && watch.progress() > 0.65) {
     return call('soon', `Racking: from about ${when(scene, expectedAt)}.`, `${gravityWords(level)} now${left === null ? '' : `, ${pointsWords(Math.max(0, left))} to go`}.`, { expectedAt, evidence: figures, changesIt });
   }
-  return call('no', 'Leave it on the lees.', `${gravityWords(level)} now${rate ? `, falling ${rateWords(rate.value)}` : ''}.`, {
+  return call('no', 'Leave it on the lees.', `${gravityWords(level)} now${rate ? `, ${fallingWords(rate.value)}` : ''}.`, {
     expectedAt: watch.progress() > 0.4 && !watch.sluggish.on ? expectedAt : null,
     evidence: figures,
     changesIt,

@@ -17,7 +17,7 @@ export function stalledCall(scene: Scene): Call {
   }
   const figures = [
     evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG'),
-    ...(rate ? [evidence('fall', rate.value, watch.stuck.on ? 0.5 : 2, 'points/d')] : []),
+    ...(rate ? [evidence('fall', Math.max(0, rate.value), watch.stuck.on ? 0.5 : 2, 'points/d')] : []),
   ];
   const above = pointsWords(level - watch.fgPrior().mean);
   if (watch.stuck.on) {
@@ -48,7 +48,8 @@ export function stalledCall(scene: Scene): Call {
       changesIt: 'Changes it: a hydrometer reading.',
     });
   }
-  return call('no', watch.terminal.on ? 'Finished, not stalled.' : 'Falling as it should.', rate ? `${rateWords(rate.value)}, ${gravityWords(level)} now.` : `${gravityWords(level)} now.`, { evidence: figures });
+  const headline = watch.terminal.on ? 'Finished, not stalled.' : rate !== null && rate.value < 0.05 ? 'Near its end, not stalled.' : 'Falling as it should.';
+  return call('no', headline, rate ? `${rateWords(rate.value)}, ${gravityWords(level)} now.` : `${gravityWords(level)} now.`, { evidence: figures });
 }
 
 /** The likeliest cause, as a sentence with a space before it; empty when nothing points anywhere. */

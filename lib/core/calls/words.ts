@@ -9,7 +9,9 @@ export const pointsWords = (points: number): string => {
   const text = Math.abs(points) >= 9.95 ? Math.round(points).toString() : points.toFixed(1).replace(/\.0$/, '');
   return `${minus(text)} ${text === '1' ? 'point' : 'points'}`;
 };
-export const rateWords = (rate: number): string => `${minus((Math.abs(rate) < 0.05 ? 0 : rate).toFixed(1))} points a day`;
+/** `5.9 points a day`; noise may make the fall of a still drink negative, which is no fall. */
+export const rateWords = (rate: number): string => (rate < 0.05 ? 'no fall' : `${rate.toFixed(1)} points a day`);
+export const fallingWords = (rate: number): string => (rate < 0.05 ? 'no fall' : `falling ${rateWords(rate)}`);
 export const gasWords = (gas: number): string => `${gas.toFixed(2)} L/h`;
 export const temperatureWords = (celsius: number): string => `${minus(celsius.toFixed(1))} °C`;
 export const strengthWords = (abv: number): string => `${abv.toFixed(1)} %`;
