@@ -28,7 +28,7 @@ interface Tube {
 /** One bottle, three ways, on one scale, with what it holds across all of them. The upper end is what counts. */
 export function Tubes({ bottle, lows }: { bottle: BottlePicture; /** Lower ends, bar: in the cellar, at the warmest. */ lows: { cellar: number; warm: number } }) {
   const frame = useRef<HTMLDivElement>(null);
-  const width = useWidth(frame, 430);
+  const width = Math.max(220, useWidth(frame, 430));
   const id = useId();
   const top = scaleTop(bottle);
   const limit = limitOf(bottle);

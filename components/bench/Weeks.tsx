@@ -14,7 +14,7 @@ const RIGHT = 8;
 /** Pressure in the warm from the day of bottling on: as asked, and if the last sugar goes. */
 export function Weeks({ points, limit, top, celsius, timeZone }: { points: readonly WeekPoint[]; limit: number; top: number; celsius: number; timeZone: string }) {
   const frame = useRef<HTMLDivElement>(null);
-  const width = useWidth(frame, 430);
+  const width = Math.max(220, useWidth(frame, 430));
   const first = points[0];
   const last = points.at(-1);
   if (!first || !last) return null;

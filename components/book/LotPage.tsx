@@ -1,0 +1,229 @@
+'use client';
+
+import Link from 'next/link';
+import { useState, type CSSProperties } from 'react';
+import { Sheet } from '@/components/batch/Sheet';
+import { BottleDrawing } from '@/components/bench/BottleDrawing';
+import { sizeWords } from '@/components/bench/words';
+import { drinkHex } from '@/components/charts/palette';
+import { Shares } from '@/components/share/Shares';
+import { Tastings } from '@/components/tasting/Tastings';
+import { Button, LinkButton } from '@/components/ui/Button';
+import { Haze } from '@/components/ui/Haze';
+import { ErrorState, FormError } from '@/components/ui/Notice';
+import { useNow } from '@/components/ui/now';
+import { GroupBar, PageHead } from '@/components/ui/Page';
+import { Sentence } from '@/components/ui/Sentence';
+import { State } from '@/components/ui/StateMark';
+import { ClientError } from '@/lib/client/fetcher';
+import { undoOpening, useLot } from '@/lib/client/lots';
+import { useMe } from '@/lib/client/me';
+import type { LotBody } from '@/lib/contracts/lots';
+import { BOTTLES, CLOSURE_CATALOGUE } from '@/lib/core/bottling/bottles';
+import { Serve } from './Serve';
+import { dayWords, leftWords, money, OPENING_WORDS, SPARKLE_WORDS, strengthWords } from './words';
+
+/** One lot of the cellar book. */
+export function LotPage({ id }: { id: string }) {
+  const { lot, error, retry } = useLot(id);
+  const { me, may } = useMe();
+  const now = useNow();
+  const [serving, setServing] = useState(false);
+  if (error && !lot) {
+    return (
+      <ErrorState title={error.status === 404 ? 'There is no such lot in this cellar' : 'The lot did not load'} onRetry={retry}>
+        {error.message}
+      </ErrorState>
+    );
+  }
+  if (!lot || !me || now === null) return <Haze height={420} label="Loading the lot" className="m-(--margin)" />;
+  const timeZone = me.cellar.time_zone;
+  const day = (at: string) => dayWords(at, timeZone, now);
+  return (
+    <div className="drink" style={{ '--drink': drinkHex(lot.batch.drink_colour) } as CSSProperties}>
+      <PageHead
+        size="title"
+        title={lot.name}
+        meta={
+          <>
+            lot {lot.code}, from{' '}
+            <Link href={`/batches/${lot.batch.id}`} className="underline underline-offset-4">
+              {lot.batch.name}
+            </Link>
+          </>
+        }
+      >
+        {may('lots.serve') && lot.counts.left > 0 && <Button onClick={() => setServing(true)}>Open, give, move</Button>}
+        {may('labels.print') && <LinkButton href={`/labels?lot=${lot.id}`}>Labels</LinkButton>}
+      </PageHead>
+      {lot.caution && (
+        <section aria-label="Caution" className="border-b border-l-[10px] border-l-madder bg-lit px-(--margin) py-3">
+          <State state="Stop" word="Caution" />
+          <p className="type-verdict-now">
+            <Sentence strong>{lot.caution}</Sentence>
+          </p>
+        </section>
+      )}
+      <dl className="grid grid-cols-2 border-b strip:grid-cols-4 wide:grid-cols-8">
+        {factsOf(lot, day).map(([name, figure]) => (
+          <div key={name} className="border-r border-b border-rule px-3 py-2 first:pl-(--margin) wide:border-b-0">
+            <dt className="type-label text-ink2">{name}</dt>
+            <dd className="font-mono text-[0.9375rem] font-semibold leading-5">{figure}</dd>
+          </div>
+        ))}
+      </dl>
+      <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px]">
+        <div className="min-w-0">
+          <Bottles lot={lot} />
+          <Tastings lotId={lot.id} timeZone={timeZone} now={now} mayTaste={may('tastings.write')} />
+          <Openings lot={lot} day={day} mayUndo={may('lots.serve')} />
+        </div>
+        <div className="min-w-0 wide:border-l">
+          <BenchRecord lot={lot} day={day} />
+          {may('shares.manage') && <Shares batchId={lot.batch.id} day={day} />}
+        </div>
+      </div>
+      {serving && (
+        <Sheet title={`${lot.name}, ${leftWords(lot.counts)}`} onClose={() => setServing(false)}>
+          <Serve lot={lot} onDone={() => setServing(false)} />
+        </Sheet>
+      )}
+    </div>
+  );
+}
+
+function factsOf(lot: LotBody, day: (at: string) => string): [string, string][] {
+  return [
+    ['left', `${lot.counts.left} of ${lot.counts.bottled}`],
+    ['bottled', day(lot.bottled_at)],
+    ['ready from', lot.ready ? `${day(lot.ready_from)}, ready` : day(lot.ready_from)],
+    ['sparkle', SPARKLE_WORDS[lot.sparkle]],
+    ['strength', strengthWords(lot.abv_percent)],
+    ['gravity', `${lot.original_gravity?.toFixed(3) ?? '?'} to ${lot.final_gravity?.toFixed(3) ?? '?'}`],
+    ['opened, given', `${lot.counts.opened}, ${lot.counts.given}`],
+    ['cost a litre', lot.cost_per_litre ? `${money(lot.cost_per_litre)}${lot.cost.known ? '' : ' or more'}` : 'not told'],
+  ];
+}
+
+function Bottles({ lot }: { lot: LotBody }) {
+  return (
+    <section aria-label="Bottles">
+      <GroupBar word="Bottles" note={leftWords(lot.counts)} />
+      <ul>
+        {lot.bottles.map((bottle) => (
+          <li key={bottle.id} className="flex items-center gap-4 border-b px-(--margin) py-2">
+            <BottleDrawing kind={bottle.kind} filled={bottle.left > 0} height={52} />
+            <div className="min-w-0 flex-1">
+              <p className="type-name-low">
+                {sizeWords(bottle.size_ml)} {BOTTLES[bottle.kind].name}, {CLOSURE_CATALOGUE[bottle.closure].name}
+              </p>
+              <p className="type-label text-ink2">
+                {bottle.rating === 'never' ? 'for still drink' : `holds ${bottle.rating.toFixed(1)} bar${bottle.rating_confirmed ? '' : ', not confirmed'}`}; at most {bottle.cellar_bar.toFixed(1)} bar in the cellar, {bottle.worst_bar.toFixed(1)} at worst
+                {bottle.cost_each && `; ${money(bottle.cost_each)} each`}
+              </p>
+              <p className="type-label">
+                {bottle.left} of {bottle.bottled} left
+                {bottle.stands.filter((stand) => stand.count > 0).map((stand) => `; ${stand.count} in ${stand.place?.name ?? 'no named place'}`)}
+              </p>
+            </div>
+          </li>
+        ))}
+      </ul>
+    </section>
+  );
+}
+
+function Openings({ lot, day, mayUndo }: { lot: LotBody; day: (at: string) => string; mayUndo: boolean }) {
+  const [failed, setFailed] = useState<string | null>(null);
+  if (lot.openings.length === 0 && lot.moves.length === 0) return null;
+  async function undo(id: string) {
+    try {
+      await undoOpening(lot.id, id);
+      setFailed(null);
+    } catch (error) {
+      setFailed(error instanceof ClientError ? error.message : 'It was not put back. Try again.');
+    }
+  }
+  return (
+    <section aria-label="What became of them">
+      <GroupBar word="What became of them" />
+      {failed && <FormError>{failed}</FormError>}
+      <ul className="type-label">
+        {lot.openings.map((opening) => (
+          <li key={opening.id} className="flex flex-wrap items-center gap-x-4 border-b border-rule px-(--margin) py-1.5">
+            <span className="text-ink2">{day(opening.at)}</span>
+            <span className={opening.kind === 'gushed' ? 'font-semibold text-madder' : 'font-semibold'}>
+              {opening.count} × {sizeWords(opening.size_ml)} {OPENING_WORDS[opening.kind]}
+              {opening.to && ` to ${opening.to}`}
+            </span>
+            {opening.note && <span className="type-reason text-ink2">{opening.note}</span>}
+            <span className="ml-auto text-ink2">{opening.by?.name}</span>
+            {mayUndo && (
+              <button type="button" onClick={() => void undo(opening.id)} className="min-h-8 text-ink2 underline underline-offset-4 max-strip:min-h-11">
+                Put back
+              </button>
+            )}
+          </li>
+        ))}
+        {lot.moves.map((move, index) => (
+          <li key={index} className="flex flex-wrap gap-x-4 border-b border-rule px-(--margin) py-1.5">
+            <span className="text-ink2">{day(move.at)}</span>
+            <span>
+              {move.count} × {sizeWords(move.size_ml)} from {move.from?.name ?? 'no named place'} to {move.to?.name ?? 'no named place'}
+            </span>
+            <span className="ml-auto text-ink2">{move.by?.name}</span>
+          </li>
+        ))}
+      </ul>
+    </section>
+  );
+}
+
+/** How the bench judged it; a stop that was put aside stays for good. */
+function BenchRecord({ lot, day }: { lot: LotBody; day: (at: string) => string }) {
+  const { bench, override } = lot;
+  return (
+    <section aria-label="From the bench">
+      <GroupBar word="From the bench" />
+      <div className="border-b px-(--margin) py-3">
+        <State state={override ? 'Stop' : 'Ready'} word={override ? 'Stop, put aside' : 'Held, even at worst'} />
+        <p className="type-verdict-now">{bench.headline}</p>
+        <ul className="type-reason text-ink2">
+          {bench.problems.map((problem) => (
+            <li key={problem}>
+              <Sentence>{problem}</Sentence>
+            </li>
+          ))}
+          <li>
+            <Sentence>{`At most ${bench.worst_bar.toFixed(1)} bar, standing no warmer than ${bench.warmest_store_c} °C.`}</Sentence>
+          </li>
+        </ul>
+        {override && (
+          <blockquote className="type-body mt-2 border-l-[3px] border-madder pl-3">
+            {override.reason}
+            <span className="type-label block text-ink2">
+              {override.by?.name ?? 'somebody who has left'}, {day(override.at)}
+            </span>
+          </blockquote>
+        )}
+        {bench.cautions.length > 0 && (
+          <ul className="type-reason mt-2 list-disc pl-4 text-ink2">
+            {bench.cautions.map((caution) => (
+              <li key={caution}>{caution}</li>
+            ))}
+          </ul>
+        )}
+      </div>
+      {lot.next_time.length > 0 && (
+        <div className="border-b px-(--margin) py-3">
+          <h3 className="type-name-low">Next time</h3>
+          <ul className="type-body">
+            {lot.next_time.map((note, index) => (
+              <li key={index}>{note.note}</li>
+            ))}
+          </ul>
+        </div>
+      )}
+    </section>
+  );
+}

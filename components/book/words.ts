@@ -1,0 +1,21 @@
+import { dayName, wallTime } from '@/components/charts/zone';
+import type { LotSummary, OPENING_KINDS } from '@/lib/contracts/lots';
+
+export const SPARKLE_WORDS: Record<LotSummary['sparkle'], string> = { still: 'still', light: 'lightly sparkling', sparkling: 'sparkling' };
+export const OPENING_WORDS: Record<(typeof OPENING_KINDS)[number], string> = { opened: 'opened', given: 'given away', broken: 'broken', gushed: 'gushed' };
+
+/** `Wed 15 Oct`, with the year where it is another. */
+export function dayWords(at: string, timeZone: string, now: number): string {
+  const seconds = Date.parse(at) / 1000;
+  const year = wallTime(seconds, timeZone).year;
+  return `${dayName(seconds, timeZone)}${year === wallTime(now / 1000, timeZone).year ? '' : ` ${year}`}`;
+}
+
+/** `6.7 %`, `6.4–6.9 %` where the span shows. */
+export const strengthWords = (abv: { lo: number; value: number; hi: number } | null): string => (abv === null ? 'not known' : `${abv.value.toFixed(1)} %`);
+
+/** `2 of 8 left` */
+export const leftWords = (counts: LotSummary['counts']): string => (counts.left === 0 ? `none of ${counts.bottled} left` : `${counts.left} of ${counts.bottled} left`);
+
+/** Money without a currency: the cellar counts in its own. */
+export const money = (range: { lo: number; value: number; hi: number }): string => range.value.toFixed(2);

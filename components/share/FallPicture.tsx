@@ -1,0 +1,56 @@
+'use client';
+
+import { useRef } from 'react';
+import { dayName } from '@/components/charts/zone';
+import { useWidth } from '@/components/ui/width';
+import type { SharedBatch } from '@/lib/contracts/shares';
+
+const HEIGHT = 220;
+const [TOP, FOOT] = [22, 26];
+
+/** The fall of the batch in its drink's colour, from the original gravity to where it ended. */
+export function FallPicture({ shared }: { shared: SharedBatch }) {
+  const frame = useRef<HTMLDivElement>(null);
+  const width = Math.max(220, useWidth(frame, 720));
+  const read = shared.entries.flatMap((entry) => (entry.gravity === null ? [] : [{ at: Date.parse(entry.at) / 1000, gravity: entry.gravity }]));
+  const fitted = shared.curve.map((point) => ({ at: Date.parse(point.at) / 1000, gravity: point.gravity }));
+  const measured = shared.series.at.flatMap((at, index) => {
+    const gravity = shared.series.gravity[index];
+    return gravity == null ? [] : [{ at, gravity }];
+  });
+  const line = (fitted.length > 1 ? fitted : measured.length > 1 ? measured : read).toSorted((a, b) => a.at - b.at);
+  const [first, last] = [line[0], line.at(-1)];
+  if (!first || !last || last.at <= first.at) return null;
+  const gravities = line.map((point) => point.gravity);
+  const high = Math.max(...gravities, shared.original_gravity ?? 0);
+  const low = Math.min(...gravities);
+  const x = (at: number) => ((at - first.at) / (last.at - first.at)) * (width - 2) + 1;
+  const y = (gravity: number) => TOP + (HEIGHT - TOP - FOOT) * ((high - gravity) / (high - low || 0.001));
+  const path = line.map((point, index) => `${index === 0 ? 'M' : 'L'}${x(point.at).toFixed(1)} ${y(point.gravity).toFixed(1)}`).join('');
+  const bed = HEIGHT - FOOT;
+  const day = (at: number) => dayName(at, 'UTC').split(' ').slice(1).join(' ');
+  return (
+    <div ref={frame} className="min-w-0 font-mono">
+      <svg width={width} height={HEIGHT} role="img" aria-label={`Gravity fell from ${high.toFixed(3)} on ${day(first.at)} to ${last.gravity.toFixed(3)} on ${day(last.at)}`}>
+        <path d={`${path}L${x(last.at)} ${bed}L${x(first.at)} ${bed}Z`} fill="var(--drink-fill)" />
+        <path d={path} fill="none" stroke="var(--ink)" strokeWidth="2.2" />
+        <path d={`M0 ${bed}H${width}`} stroke="var(--ink)" strokeWidth="1.5" />
+        {read.filter((point) => point.at >= first.at && point.at <= last.at).map((point) => (
+          <circle key={point.at} cx={x(point.at)} cy={y(point.gravity)} r="4" fill="var(--lit)" stroke="var(--ink)" strokeWidth="1.4" />
+        ))}
+        <text x="2" y="14" fontSize="13" fontWeight="600" fill="var(--ink)">
+          {high.toFixed(3)}
+        </text>
+        <text x={width - 2} y={Math.max(14, y(last.gravity) - 10)} textAnchor="end" fontSize="13" fontWeight="600" fill="var(--ink)">
+          {last.gravity.toFixed(3)}
+        </text>
+        <text x="2" y={HEIGHT - 8} fontSize="12" fill="var(--ink2)">
+          {day(first.at)}
+        </text>
+        <text x={width - 2} y={HEIGHT - 8} textAnchor="end" fontSize="12" fill="var(--ink2)">
+          {day(last.at)}
+        </text>
+      </svg>
+    </div>
+  );
+}

@@ -1,0 +1,92 @@
+'use client';
+
+import { useState } from 'react';
+import { Sheet } from '@/components/batch/Sheet';
+import { dayWords } from '@/components/book/words';
+import { Button } from '@/components/ui/Button';
+import { Haze } from '@/components/ui/Haze';
+import { GroupBar } from '@/components/ui/Page';
+import { createTasting, removeTasting, useTastings } from '@/lib/client/tastings';
+import { TastingSheet } from './TastingSheet';
+import { ASPECTS, FOUND_WORDS, spreadWords, type Found } from './words';
+
+/** What people found in a lot: the average with its spread, and each note. */
+export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; timeZone: string; now: number; mayTaste: boolean }) {
+  const { tastings, summary, error, retry } = useTastings(lotId);
+  const [open, setOpen] = useState(false);
+  return (
+    <section aria-label="Tasting notes">
+      <GroupBar word="Tasting notes" note={tastings && `${tastings.length}`} />
+      {error && !tastings ? (
+        <div className="type-body px-(--margin) py-3">
+          The notes did not load. {error.message} <Button onClick={retry}>Try again</Button>
+        </div>
+      ) : !tastings || !summary ? (
+        <Haze height={80} label="Loading the notes" className="m-(--margin)" />
+      ) : (
+        <>
+          <div className="flex flex-wrap items-center gap-x-6 gap-y-2 border-b px-(--margin) py-2">
+            <p className="type-fig-lg">{spreadWords(summary.score, 10)}</p>
+            <dl className="type-label flex flex-wrap gap-x-5 text-ink2">
+              {ASPECTS.map((aspect) => (
+                <div key={aspect}>
+                  <dt className="inline">{aspect} </dt>
+                  <dd className="inline text-ink">{spreadWords(summary[aspect], 5)}</dd>
+                </div>
+              ))}
+              {(Object.entries(summary.sparkle) as [Found, number][]).filter(([, count]) => count > 0).map(([found, count]) => (
+                <div key={found}>
+                  <dt className="inline">{FOUND_WORDS[found]} </dt>
+                  <dd className="inline text-ink">{count}</dd>
+                </div>
+              ))}
+            </dl>
+            {mayTaste && (
+              <Button className="ml-auto" onClick={() => setOpen(true)}>
+                Taste it
+              </Button>
+            )}
+          </div>
+          <ul>
+            {tastings.map((tasting) => (
+              <li key={tasting.id} className="border-b border-rule px-(--margin) py-2">
+                <p className="type-label flex flex-wrap gap-x-4 text-ink2">
+                  <span className="font-semibold text-ink">
+                    {tasting.by.name ?? 'somebody'}
+                    {tasting.by.guest && ', guest'}
+                  </span>
+                  <span>{dayWords(tasting.at, timeZone, now)}</span>
+                  {tasting.score !== null && <span className="text-ink">{tasting.score.toFixed(1)} of 10</span>}
+                  {ASPECTS.filter((aspect) => tasting[aspect] !== null).map((aspect) => (
+                    <span key={aspect}>
+                      {aspect} {tasting[aspect]}
+                    </span>
+                  ))}
+                  {tasting.sparkle && <span>{FOUND_WORDS[tasting.sparkle]}</span>}
+                  {tasting.mine && (
+                    <button type="button" onClick={() => void removeTasting(tasting.id)} className="ml-auto min-h-8 underline underline-offset-4 max-strip:min-h-11">
+                      Take back
+                    </button>
+                  )}
+                </p>
+                {tasting.words && <p className="type-body break-words">{tasting.words}</p>}
+                {tasting.next_time && <p className="type-reason break-words text-ink2">Next time: {tasting.next_time}</p>}
+              </li>
+            ))}
+          </ul>
+        </>
+      )}
+      {open && (
+        <Sheet title="Tasting sheet" onClose={() => setOpen(false)}>
+          <TastingSheet
+            guest={false}
+            onSend={async ({ name: _name, ...tasted }) => {
+              await createTasting(lotId, { ...tasted, at: new Date().toISOString() });
+              setOpen(false);
+            }}
+          />
+        </Sheet>
+      )}
+    </section>
+  );
+}
