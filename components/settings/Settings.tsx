@@ -2,6 +2,7 @@
 
 import { useState, type ReactNode } from 'react';
 import { dayName, when } from '@/components/charts/zone';
+import { MorePlaces } from '@/components/shell/MorePlaces';
 import { Button } from '@/components/ui/Button';
 import { Choice } from '@/components/ui/Choice';
 import { Haze } from '@/components/ui/Haze';
@@ -130,6 +131,7 @@ export function Settings() {
   const timeZone = me?.cellar.time_zone ?? 'UTC';
   return (
     <>
+      <MorePlaces />
       <PageHead title="Settings" />
       {loading && <Haze height={96} label="Loading the settings" className="mx-(--margin) my-3" />}
       <div className="wide:grid wide:min-h-[calc(100dvh-101px)] wide:grid-cols-[424px_minmax(0,1fr)]">

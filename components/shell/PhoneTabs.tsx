@@ -9,7 +9,7 @@ export function PhoneTabs({ places }: { places: readonly Place[] }) {
   const path = usePathname();
   return (
     <nav aria-label="Main" className="fixed inset-x-0 bottom-0 z-20 flex border-t-[1.5px] border-ink bg-sheet pb-[env(safe-area-inset-bottom)] strip:hidden">
-      {[...places, MORE].map((place) => {
+      {[...places.filter((place) => place.tab), MORE].map((place) => {
         const here = isHere(place, path);
         const Icon = place.icon;
         return (

@@ -1,14 +1,16 @@
 import type { ComponentType } from 'react';
-import { FlagIcon, FloatIcon, LinesIcon, ShelfIcon } from '@/components/ui/icons';
+import { FlagIcon, FloatIcon, LinesIcon, RoundsIcon, SheetIcon, ShelfIcon } from '@/components/ui/icons';
 import type { Action } from '@/lib/core/actions';
 
 /** A page of the main navigation. */
 export interface Place {
-  href: '/shelf' | '/alerts' | '/sensors' | '/settings';
+  href: '/shelf' | '/rounds' | '/musts' | '/alerts' | '/sensors' | '/settings';
   name: string;
   icon: ComponentType<{ size?: number; className?: string }>;
   /** Things there that nobody has yet. */
   count?: number;
+  /** Has a tab on a phone, where there is room for four and More; the others stand on More. */
+  tab?: boolean;
 }
 
 /** Pages below it are part of it too; a batch stands on the shelf. */
@@ -20,9 +22,11 @@ export function isHere(place: Place, path: string): boolean {
 /** What is there for this person; a guest sees neither alerts nor sensors. */
 export function placesFor(may: (action: Action) => boolean, openAlerts: number): Place[] {
   return [
-    { href: '/shelf', name: 'Shelf', icon: ShelfIcon },
-    ...(may('alerts.read') ? [{ href: '/alerts' as const, name: 'Alerts', icon: FlagIcon, count: openAlerts }] : []),
-    ...(may('sensors.read') ? [{ href: '/sensors' as const, name: 'Sensors', icon: FloatIcon }] : []),
+    { href: '/shelf', name: 'Shelf', icon: ShelfIcon, tab: true },
+    ...(may('jobs.read') ? [{ href: '/rounds' as const, name: 'Rounds', icon: RoundsIcon, tab: true }] : []),
+    ...(may('musts.read') ? [{ href: '/musts' as const, name: 'Musts', icon: SheetIcon }] : []),
+    ...(may('alerts.read') ? [{ href: '/alerts' as const, name: 'Alerts', icon: FlagIcon, count: openAlerts, tab: true }] : []),
+    ...(may('sensors.read') ? [{ href: '/sensors' as const, name: 'Sensors', icon: FloatIcon, tab: true }] : []),
   ];
 }
 

@@ -20,6 +20,18 @@ export const ShelfIcon = (props: IconProps) => (
   </Icon>
 );
 
+export const RoundsIcon = (props: IconProps) => (
+  <Icon {...props}>
+    <path d="M2.5 2.5h6v6h-6ZM2.5 11.5h6v6h-6ZM11.5 5.5h6M11.5 14.5h6M4 5.4l1.2 1.2 2.2-2.6" />
+  </Icon>
+);
+
+export const SheetIcon = (props: IconProps) => (
+  <Icon {...props}>
+    <path d="M4 1.8h8.6L16 5.2v13H4ZM7 7.5h6M7 11h6M7 14.5h3.6" />
+  </Icon>
+);
+
 export const FlagIcon = (props: IconProps) => (
   <Icon {...props}>
     <path d="M3 1.5v17M3 2.4l14 5L3 12.4" />

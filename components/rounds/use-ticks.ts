@@ -1,0 +1,54 @@
+'use client';
+
+import { useEffect, useRef, useState } from 'react';
+import { ClientError } from '@/lib/client/fetcher';
+import { doJob, undoJob } from '@/lib/client/jobs';
+import { UNDO_S, type JobBody } from '@/lib/contracts/jobs';
+
+export interface Ticks {
+  /** Ticked here; each stays in its place for ten seconds, so that it can be taken back there. */
+  ticked: ReadonlyMap<string, JobBody>;
+  failed: string | null;
+  tick: (job: JobBody) => void;
+  untick: (job: JobBody) => void;
+  fail: (message: string) => void;
+}
+
+const said = (error: unknown, title: string) => `${title}: ${error instanceof ClientError ? error.message : 'not saved. Try again.'}`;
+
+export function useTicks(): Ticks {
+  const [ticked, setTicked] = useState<ReadonlyMap<string, JobBody>>(new Map());
+  const [failed, setFailed] = useState<string | null>(null);
+  const timers = useRef(new Map<string, ReturnType<typeof setTimeout>>());
+
+  useEffect(() => {
+    const running = timers.current;
+    return () => running.forEach((timer) => clearTimeout(timer));
+  }, []);
+
+  const drop = (id: string) => {
+    clearTimeout(timers.current.get(id));
+    timers.current.delete(id);
+    setTicked((before) => new Map([...before].filter(([key]) => key !== id)));
+  };
+
+  return {
+    ticked,
+    failed,
+    fail: setFailed,
+    tick: (job) => {
+      setFailed(null);
+      setTicked((before) => new Map(before).set(job.id, job));
+      timers.current.set(job.id, setTimeout(() => drop(job.id), UNDO_S * 1000));
+      doJob(job.id).catch((error: unknown) => {
+        drop(job.id);
+        setFailed(said(error, job.title));
+      });
+    },
+    untick: (job) => {
+      undoJob(job.id)
+        .then(() => drop(job.id))
+        .catch((error: unknown) => setFailed(said(error, job.title)));
+    },
+  };
+}
