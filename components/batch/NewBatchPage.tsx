@@ -8,28 +8,35 @@ import { Haze } from '@/components/ui/Haze';
 import { EmptyState, ErrorState, FormError } from '@/components/ui/Notice';
 import { useNow } from '@/components/ui/now';
 import { PageHead } from '@/components/ui/Page';
+import { Sentence } from '@/components/ui/Sentence';
 import { Vessel } from '@/components/vessel/Vessel';
 import { createBatch } from '@/lib/client/batches';
 import { ClientError } from '@/lib/client/fetcher';
 import { useMe } from '@/lib/client/me';
+import { useBatchProposal } from '@/lib/client/musts';
+import type { BatchProposal } from '@/lib/contracts/musts';
 import { useSensors } from '@/lib/client/sensors';
 import { BatchFields } from './BatchFields';
-import { batchErrors, batchToCreate, newDraft, type BatchDraft, type BatchErrors } from './batch-form';
+import { batchErrors, batchToCreate, draftOfProposal, newDraft, type BatchDraft, type BatchErrors } from './batch-form';
 import { toLocal } from './entry-form';
 import { typedNumber } from './figures';
 import { focusFirstError } from './focus';
 
-export function NewBatchPage() {
-  const { me, may, error, retry } = useMe();
+/** `must`: the sheet it is made from, in the version given. */
+export function NewBatchPage({ must = null, version }: { must?: string | null; version?: number | undefined }) {
+  const { me, may, error: notMe, retry: askMe } = useMe();
+  const { proposal, error: noProposal, retry: askProposal } = useBatchProposal(must, { ...(version === undefined ? {} : { version }) });
   const now = useNow();
-  if (error && !me) {
+  const error = notMe ?? noProposal;
+  const retry = notMe ? askMe : askProposal;
+  if (error && (!me || (must && !proposal))) {
     return (
       <ErrorState title="The page did not load" onRetry={retry}>
         {error.message}
       </ErrorState>
     );
   }
-  if (!me || now === null) return <Haze height={320} className="m-(--margin)" />;
+  if (!me || now === null || (must && !proposal)) return <Haze height={320} className="m-(--margin)" />;
   if (!may('batches.create')) {
     return (
       <EmptyState title="Starting a batch is for brewers" action={<LinkButton href="/shelf">To the shelf</LinkButton>}>
@@ -37,13 +44,13 @@ export function NewBatchPage() {
       </EmptyState>
     );
   }
-  return <NewBatchForm timeZone={me.cellar.time_zone} now={now / 1000} />;
+  return <NewBatchForm timeZone={me.cellar.time_zone} now={now / 1000} proposal={proposal ?? null} />;
 }
 
-function NewBatchForm({ timeZone, now }: { timeZone: string; now: number }) {
+function NewBatchForm({ timeZone, now, proposal }: { timeZone: string; now: number; proposal: BatchProposal | null }) {
   const router = useRouter();
   const { sensors } = useSensors();
-  const [draft, setDraft] = useState<BatchDraft>(() => newDraft('cider', now, timeZone));
+  const [draft, setDraft] = useState<BatchDraft>(() => (proposal ? draftOfProposal(proposal, now, timeZone) : newDraft('cider', now, timeZone)));
   const [errors, setErrors] = useState<BatchErrors>({});
   const [failed, setFailed] = useState<string | null>(null);
   const [sending, setSending] = useState(false);
@@ -63,7 +70,7 @@ function NewBatchForm({ timeZone, now }: { timeZone: string; now: number }) {
     }
     setSending(true);
     try {
-      const batch = await createBatch(made.batch);
+      const batch = await createBatch({ ...made.batch, must_version_id: proposal?.must_version_id ?? null });
       router.push(`/batches/${batch.id}`);
     } catch (error) {
       const told = error instanceof ClientError ? error : null;
@@ -77,9 +84,14 @@ function NewBatchForm({ timeZone, now }: { timeZone: string; now: number }) {
 
   return (
     <>
-      <PageHead title="Start a batch" meta="Everything but the name, the kind and the volumes can be told later." />
+      <PageHead title="Start a batch" meta={proposal ? 'From its must sheet; the batch keeps this version.' : 'Everything but the name, the kind and the volumes can be told later.'} />
       <div className="mx-auto grid max-w-[1000px] gap-8 px-(--margin) py-5 wide:grid-cols-[minmax(0,600px)_1fr]">
         <form onSubmit={(event) => void send(event)} noValidate className="flex flex-col gap-5">
+          {proposal && (
+            <p className="type-body border-l-[3px] border-rule2 pl-3">
+              <Sentence>{`Promised ${proposal.expected_original_gravity.value.lo.toFixed(3)} to ${proposal.expected_original_gravity.value.hi.toFixed(3)}. Write the gravity as you read it. ${proposal.neck_reason}`}</Sentence>
+            </p>
+          )}
           <BatchFields draft={draft} errors={errors} onChange={setDraft} latest={toLocal(now, timeZone)} fresh>
             <Select label="Sensor" value={draft.sensor} onChange={(event) => setDraft({ ...draft, sensor: event.target.value })} error={errors.sensor} hint={free.length === 0 ? 'No free sensor: readings by hand work alone.' : undefined}>
               <option value="">none</option>

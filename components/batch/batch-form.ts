@@ -1,5 +1,6 @@
 import { createBatch, DRINK_COLOURS, updateBatch, type BatchBody, type UpdateBatch } from '@/lib/contracts/batches';
 import type { NewBatch } from '@/lib/client/batches';
+import type { BatchProposal } from '@/lib/contracts/musts';
 import type { DrinkKind, Neck } from '@/lib/core/types';
 import { fromLocal, toLocal } from './entry-form';
 import { typedGravity, typedNumber } from './figures';
@@ -73,6 +74,26 @@ export function usualDraft(kind: DrinkKind): Pick<BatchDraft, 'colour' | 'neck' 
 
 export function newDraft(kind: DrinkKind, now: number, timeZone: string): BatchDraft {
   return { name: '', kind, vesselKind: 'demijohn', tag: '', place: '', volume: '', vessel: '', pitchedAt: toLocal(now, timeZone), gravity: '', yeast: '', sensor: '', ...usualDraft(kind) };
+}
+
+/** A batch as its must sheet proposes it; the gravity stays empty until it is read. */
+export function draftOfProposal(proposal: BatchProposal, now: number, timeZone: string): BatchDraft {
+  const usual = newDraft(proposal.kind, now, timeZone);
+  const text = (value: number | null, otherwise: string) => (value === null ? otherwise : String(value));
+  return {
+    ...usual,
+    name: proposal.name,
+    volume: String(proposal.volume_l),
+    vessel: String(proposal.vessel_l),
+    vesselKind: proposal.vessel_l > 8 ? 'carboy' : 'demijohn',
+    neck: proposal.neck,
+    yeast: proposal.yeast ?? '',
+    attenuationMin: text(proposal.attenuation_min_percent, usual.attenuationMin),
+    attenuationMax: text(proposal.attenuation_max_percent, usual.attenuationMax),
+    tolerance: text(proposal.alcohol_tolerance_abv, usual.tolerance),
+    temperatureMin: text(proposal.temperature_min_c, usual.temperatureMin),
+    temperatureMax: text(proposal.temperature_max_c, usual.temperatureMax),
+  };
 }
 
 /** Another kind brings its own usual figures, save those that the person has changed from the last kind's. */

@@ -127,7 +127,7 @@ export function Outcome({ result, kind, vesselL, missing }: { result: MustResult
         </div>
         <Spread name="Original gravity" {...og} from={1} to={og.hi > 1.13 ? 1.2 : 1.14} write={(value) => value.toFixed(3)} />
         <p className="type-label mt-0.5 text-ink2">
-          between {ends(og, 3)}
+          {ends(og, 3)}
           {pitchDiffers && `; ${outcome.gravityAtPitch.value.value.toFixed(3)} at the pitch, the rest comes over days`}
         </p>
         <How how={outcome.originalGravity.how} of="original gravity" />

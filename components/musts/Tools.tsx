@@ -38,7 +38,7 @@ function Scale({ draft, onApply }: { draft: SheetDraft; onApply: Apply }) {
   return (
     <form onSubmit={scale} noValidate className="flex flex-wrap items-end gap-2">
       <Field label="Must fills, with pulp" className="flex-1 basis-32" unit="L" inputMode="decimal" autoComplete="off" value={fill} onChange={(event) => setFill(event.target.value)} error={error} />
-      <Field label="Vessel holds" className="flex-1 basis-32" unit="L" inputMode="decimal" autoComplete="off" value={vessel} placeholder={draft.vessel || 'as it is'} onChange={(event) => setVessel(event.target.value)} />
+      <Field label="That vessel holds" className="flex-1 basis-32" unit="L" inputMode="decimal" autoComplete="off" value={vessel} placeholder={draft.vessel || 'as it is'} onChange={(event) => setVessel(event.target.value)} />
       <Button type="submit">Scale</Button>
     </form>
   );
