@@ -35,6 +35,8 @@ export function chartOptions(scene: () => Scene, size: { width: number; height: 
   const stopped = page && hasStopped(scene().picture);
   const ink = () => scene().palette.ink;
   const ratio = () => uPlot.pxRatio || 1;
+  // uPlot takes widths in CSS pixels but dashes in the screen's.
+  const dashed = (...lengths: number[]) => lengths.map((length) => length * ratio());
   const view = (plot: uPlot): View => {
     const now = scene();
     return viewOf(plot, { palette: now.palette, layout: now.layout, picture: now.picture, ratio: ratio(), haze: hazePattern(plot.ctx, now.palette, ratio(), false) });
@@ -63,10 +65,10 @@ export function chartOptions(scene: () => Scene, size: { width: number; height: 
     fill: () => thin(scene().palette.drink, drinkShare(scene().palette, page)),
     fillTo: () => scene().picture.bed?.value ?? scene().layout.gravity.min,
   };
-  series[SERIES.forecast] = { ...silent, stroke: ink, width: page ? 1.6 : 1.4, dash: [5, 3] };
+  series[SERIES.forecast] = { ...silent, stroke: ink, width: page ? 1.6 : 1.4, dash: dashed(5, 3) };
   series[SERIES.expectedHigh] = silent;
   series[SERIES.expectedLow] = silent;
-  series[SERIES.expected] = { ...silent, stroke: () => (stopped ? scene().palette.ink : scene().palette.ink3), width: stopped ? 1.6 : 1.3, dash: stopped ? [5, 3] : [1.5, 3] };
+  series[SERIES.expected] = { ...silent, stroke: () => (stopped ? scene().palette.ink : scene().palette.ink3), width: stopped ? 1.6 : 1.3, dash: stopped ? dashed(5, 3) : dashed(1.5, 3) };
   series[SERIES.readings] = {
     scale: 'gravity',
     paths: () => null,

@@ -48,6 +48,9 @@ export function drawMarks(view: View, marks: readonly Mark[]): void {
   for (const mark of marks) {
     context.save();
     context.setTransform(ratio, 0, 0, ratio, 0, 0);
+    // What uPlot drew last leaves its own width and dash behind.
+    context.lineWidth = 1;
+    context.setLineDash([]);
     mark(view);
     context.restore();
   }
