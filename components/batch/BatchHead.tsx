@@ -1,6 +1,6 @@
 import Link from 'next/link';
-import { BackIcon } from '@/components/ui/icons';
-import { Button } from '@/components/ui/Button';
+import { BackIcon, OnwardIcon } from '@/components/ui/icons';
+import { Button, LinkButton } from '@/components/ui/Button';
 import { Vessel } from '@/components/vessel/Vessel';
 import type { VesselState } from '@/components/vessel/describe';
 import type { BatchBody } from '@/lib/contracts/batches';
@@ -11,6 +11,8 @@ export interface HeadActions {
   onRead: (() => void) | null;
   onAdd: (() => void) | null;
   onSetup: (() => void) | null;
+  /** Where additions, racking, fining and the family stand; null for those who only look. */
+  work: string | null;
 }
 
 function Facts({ facts, phone }: { facts: readonly Fact[]; phone: boolean }) {
@@ -50,6 +52,7 @@ export function BatchHead({ batch, vessel, facts, actions }: { batch: BatchBody;
           <div className="ml-auto flex flex-wrap gap-2">
             {actions.onRead && <Button onClick={actions.onRead}>Read by hand</Button>}
             {actions.onAdd && <Button onClick={actions.onAdd}>Add</Button>}
+            {actions.work && <LinkButton href={actions.work}>Cellar work</LinkButton>}
             {actions.onSetup && (
               <Button look="quiet" onClick={actions.onSetup}>
                 Set-up
@@ -87,10 +90,15 @@ export function PhoneHead({ batch, meta, onSetup }: { batch: BatchBody; meta: re
   );
 }
 
-export function PhoneFacts({ facts }: { facts: readonly Fact[] }) {
+export function PhoneFacts({ facts, work }: { facts: readonly Fact[]; work: string | null }) {
   return (
     <div className="strip:hidden">
       <Facts facts={facts} phone />
+      {work && (
+        <Link href={work} className="type-label flex min-h-11 items-center justify-between border-b px-(--margin) text-ink no-underline">
+          Cellar work: add, rack, fine, family <OnwardIcon size={11} />
+        </Link>
+      )}
     </div>
   );
 }

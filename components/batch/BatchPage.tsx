@@ -121,6 +121,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
     onRead,
     onAdd: working && may('entries.create') ? () => open(may('entries.alter') ? 'addition' : 'observation') : null,
     onSetup: may('batches.update') ? () => setOpened({ form: 'setup' }) : null,
+    work: may('entries.create') ? `/batches/${batch.id}/work` : null,
   };
   const first = rows[0] ?? null;
   const close = () => setOpened(null);
@@ -138,7 +139,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
       <PhoneHead batch={batch} onSetup={actions.onSetup} meta={[`${day === null ? 'not pitched' : `day ${day}`}, ${litres(batch.volume_l)}`, ...(heard === null ? [] : [`heard ${when(heard, now, timeZone)}`])]} />
       <BatchHead batch={batch} vessel={vessel} facts={facts} actions={actions} />
       {first && <Decision row={first} vessel={vessel} when={whenOf(first, judged, now, timeZone)} done={working ? doneAct(first, batch, open, may('entries.alter')) : null} onRead={onRead} mayTake={may('alerts.acknowledge')} />}
-      <PhoneFacts facts={facts} />
+      <PhoneFacts facts={facts} work={actions.work} />
       <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px] wide:grid-rows-[auto_1fr]">
         <div className="wide:col-start-1 wide:row-start-1">
           <Evidence name={batch.name} picture={picture} span={span} whole={whole} onSpan={(next) => setChosen(isWhole(next, whole) ? null : next)} timeZone={timeZone} phone={phone} arriving={series.loading} trouble={trouble ? `${trouble.what} did not arrive (${trouble.error?.status ? `error ${trouble.error.status}` : 'no answer'}). Shown is what was known before.` : null} onRetry={retryAll} />

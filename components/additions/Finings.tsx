@@ -1,0 +1,149 @@
+'use client';
+
+import { useEffect, useState } from 'react';
+import { when } from '@/components/charts/zone';
+import { countdown } from '@/components/rounds/rows';
+import { Button } from '@/components/ui/Button';
+import { Field, Select } from '@/components/ui/Field';
+import { FormError } from '@/components/ui/Notice';
+import { Sentence } from '@/components/ui/Sentence';
+import { State } from '@/components/ui/StateMark';
+import { secondDose, startFining, useFinings } from '@/lib/client/cellarwork';
+import { ClientError } from '@/lib/client/fetcher';
+import type { FiningBody } from '@/lib/contracts/family';
+import { FININGS } from '@/lib/core/additions/fining';
+import { HAZES } from '@/lib/core/additions/haze';
+
+function Running({ fining, now, timeZone, mayDo, onFail }: { fining: FiningBody; now: number; timeZone: string; mayDo: boolean; onFail: (message: string) => void }) {
+  const [seconds, setSeconds] = useState<number | null>(null);
+  const [busy, setBusy] = useState(false);
+  const { due_at: due } = fining;
+  useEffect(() => {
+    if (!due) return;
+    const tell = () => setSeconds((Date.parse(due) - Date.now()) / 1000);
+    const timer = setInterval(tell, 1000);
+    return () => clearInterval(timer);
+  }, [due]);
+  const at = (text: string) => when(Date.parse(text) / 1000, now, timeZone);
+  const waits = fining.state === 'waiting_for_second' || fining.state === 'second_due';
+  const over = seconds !== null && seconds < 0;
+  return (
+    <li className="flex flex-wrap items-center gap-x-4 gap-y-2 border-b py-3">
+      <div className="min-w-0 flex-1 basis-56">
+        <State state={waits ? (over || fining.state === 'second_due' ? 'Now' : 'Due') : fining.state === 'settling' ? 'Leave be' : 'Done'} word={waits ? (over || fining.state === 'second_due' ? 'Second dose now' : 'Second dose waits') : fining.state === 'settling' ? 'Settling' : 'Settled'} />
+        <p className="type-verdict">
+          {fining.name}
+          {waits && `: ${fining.parts[1] ?? ''}`}
+        </p>
+        <p className="type-reason text-ink2">
+          <Sentence>{`First dose ${at(fining.first_at)}.${fining.bright_from ? ` Look again ${at(fining.bright_from)}.` : ''} ${fining.caution}`}</Sentence>
+        </p>
+      </div>
+      {waits && due && (
+        <span role="timer" aria-live="off" className={`type-fig-lg ${over ? 'text-madder' : ''}`}>
+          {seconds === null ? '' : countdown(seconds)}
+        </span>
+      )}
+      {waits && mayDo && (
+        <Button
+          look="first"
+          disabled={busy}
+          onClick={() => {
+            setBusy(true);
+            secondDose(fining.id, { at: new Date().toISOString() })
+              .catch((error: unknown) => onFail(error instanceof ClientError ? error.message : 'It was not saved. Try again.'))
+              .finally(() => setBusy(false));
+          }}
+        >
+          Second dose is in
+        </Button>
+      )}
+    </li>
+  );
+}
+
+/** Finings in one or two doses with their clock, and why a drink may stay cloudy. */
+export function Finings({ batchId, now, timeZone, mayDo }: { batchId: string; now: number; timeZone: string; mayDo: boolean }) {
+  const { finings } = useFinings(batchId);
+  const [key, setKey] = useState('two-part');
+  const [dose, setDose] = useState('');
+  const [failed, setFailed] = useState<string | null>(null);
+  const [busy, setBusy] = useState(false);
+  /** One a dose, so that a second try after a lost answer keeps one. */
+  const [clientId, setClientId] = useState(() => crypto.randomUUID());
+  const chosen = FININGS.find((item) => item.key === key);
+
+  async function start() {
+    setBusy(true);
+    setFailed(null);
+    try {
+      await startFining(batchId, { at: new Date().toISOString(), fining: key, dose: dose.trim() === '' ? null : dose.trim(), client_id: clientId });
+      setDose('');
+      setClientId(crypto.randomUUID());
+    } catch (error) {
+      setFailed(error instanceof ClientError ? error.message : 'It was not saved. Try again; saving twice keeps one.');
+    }
+    setBusy(false);
+  }
+
+  return (
+    <div className="flex max-w-[700px] flex-col gap-4">
+      {finings && finings.length > 0 && (
+        <ul className="border-t">
+          {finings.map((fining) => (
+            <Running key={fining.id} fining={fining} now={now} timeZone={timeZone} mayDo={mayDo} onFail={setFailed} />
+          ))}
+        </ul>
+      )}
+      {mayDo && (
+        <>
+          <div className="grid gap-3 strip:grid-cols-2">
+            <Select label="Fining" value={key} onChange={(event) => setKey(event.target.value)}>
+              {FININGS.map((item) => (
+                <option key={item.key} value={item.key}>
+                  {item.name}
+                </option>
+              ))}
+            </Select>
+            <Field label="Dose" autoComplete="off" maxLength={60} placeholder={chosen?.usualDose} value={dose} onChange={(event) => setDose(event.target.value)} />
+          </div>
+          {chosen && (
+            <p className="type-reason border-l-[3px] border-ochre pl-3">
+              <Sentence>{`Takes ${chosen.takes}. Usual for 4.5 L: ${chosen.usualDose}.${chosen.intervalMin === null ? '' : ` Second part after ${chosen.intervalMin} min.`} Settles in ${chosen.settleDays.lo} to ${chosen.settleDays.hi} days. ${chosen.allergens.length > 0 ? `Allergen: ${chosen.allergens.join(', ')}. ` : ''}${chosen.caution}`}</Sentence>
+              <span className="type-tick block text-ink2">{chosen.source}</span>
+            </p>
+          )}
+          <Button look="first" className="self-end" disabled={busy} onClick={() => void start()}>
+            {chosen?.intervalMin === null ? 'It is in' : 'First dose is in'}
+          </Button>
+        </>
+      )}
+      {failed && <FormError>{failed}</FormError>}
+      <section aria-labelledby="haze">
+        <h3 id="haze" className="type-sub border-b-[1.5px] border-ink pb-1">
+          Still cloudy?
+        </h3>
+        {HAZES.map((haze) => (
+          <details key={haze.cause} className="border-b">
+            <summary className="type-name-low flex min-h-11 cursor-pointer flex-wrap items-baseline gap-x-3 py-2.5 strip:min-h-9">
+              {haze.cause[0]?.toUpperCase()}
+              {haze.cause.slice(1)} <span className="type-reason font-[420] text-ink2">{haze.where}</span>
+            </summary>
+            <dl className="type-body grid grid-cols-[5rem_minmax(0,1fr)] gap-x-3 pb-3">
+              <dt className="type-label text-ink2">test</dt>
+              <dd><Sentence>{`${haze.test} ${haze.shows}`}</Sentence></dd>
+              <dt className="type-label text-ink2">remedy</dt>
+              <dd><Sentence>{haze.remedy}</Sentence></dd>
+              {haze.caution && (
+                <>
+                  <dt className="type-label text-ochre">caution</dt>
+                  <dd><Sentence>{haze.caution}</Sentence></dd>
+                </>
+              )}
+            </dl>
+          </details>
+        ))}
+      </section>
+    </div>
+  );
+}

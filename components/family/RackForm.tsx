@@ -1,0 +1,164 @@
+'use client';
+
+import { useState, type FormEvent } from 'react';
+import { fromLocal, toLocal } from '@/components/batch/entry-form';
+import { points, typedGravity, typedNumber } from '@/components/batch/figures';
+import { NECK_WORDS } from '@/components/batch/words';
+import { Button } from '@/components/ui/Button';
+import { Field, Select } from '@/components/ui/Field';
+import { How } from '@/components/ui/How';
+import { FormError } from '@/components/ui/Notice';
+import { Sentence } from '@/components/ui/Sentence';
+import { useBatches } from '@/lib/client/batches';
+import { rackBatch, topUpBatch } from '@/lib/client/cellarwork';
+import { ClientError } from '@/lib/client/fetcher';
+import type { BatchBody } from '@/lib/contracts/batches';
+import { rackForm, topUpBatchForm, type MovedBody } from '@/lib/contracts/family';
+import { NECKS } from '@/lib/core/types';
+
+type What = '' | 'water' | 'must' | 'drink' | 'batch';
+
+/** What a racking or a topping up did to the drink. */
+function Effect({ moved }: { moved: MovedBody }) {
+  const { effect } = moved;
+  return (
+    <section aria-live="polite" className="max-w-[600px] border-l-[3px] border-green bg-lit py-2 pl-3">
+      <p className="type-verdict">Done and logged.</p>
+      {effect ? (
+        <>
+          <p className="type-body">
+            <Sentence>{`${effect.before.volume_l.toFixed(2)} L at ${effect.before.gravity.toFixed(3)} became ${effect.after.volume_l.toFixed(2)} L at ${effect.after.gravity.toFixed(3)}: ${points(effect.gravity_change_points)}, strength ${effect.after.abv_percent.toFixed(1)} %.`}</Sentence>
+          </p>
+          {effect.cautions.map((caution) => (
+            <p key={caution} className="type-reason text-ink2">
+              <Sentence>{caution}</Sentence>
+            </p>
+          ))}
+          <How how={effect.how} of="what it did" />
+        </>
+      ) : (
+        <p className="type-reason text-ink2">No gravity is known yet, so what it did to the strength is not reckoned.</p>
+      )}
+    </section>
+  );
+}
+
+const FIELD_OF: Record<string, string> = { left_l: 'left', 'vessel.vessel_l': 'vessel', 'vessel.tag': 'tag', 'vessel.place': 'place', sulphite_g: 'sulphite', at: 'at' };
+const fieldOf = (path: string): string => FIELD_OF[path] ?? (/top_up(\.\d+)?\.volume_l$/.test(path) ? 'topUp' : /original_gravity$/.test(path) ? 'original' : /gravity$/.test(path) ? 'gravity' : /batch_id$/.test(path) ? 'from' : path);
+
+/** Racking off the lees, or topping up alone: what stayed behind, where it went, what filled the room. */
+export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rack: boolean; now: number; timeZone: string }) {
+  const { batches } = useBatches({ state: 'working' });
+  const [draft, setDraft] = useState({ left: '', vessel: '', tag: '', place: '', neck: '', sulphite: '', what: (rack ? '' : 'water') as What, topUp: '', gravity: '', original: '', from: '', at: toLocal(now, timeZone), text: '' });
+  const [errors, setErrors] = useState<Record<string, string>>({});
+  const [failed, setFailed] = useState<string | null>(null);
+  const [sending, setSending] = useState(false);
+  const [moved, setMoved] = useState<MovedBody | null>(null);
+  const [clientId] = useState(() => crypto.randomUUID());
+  const set = (field: keyof typeof draft) => (event: { target: { value: string } }) => setDraft((before) => ({ ...before, [field]: event.target.value }));
+
+  function tell(fields: Record<string, readonly string[]>) {
+    const known = Object.fromEntries(Object.entries(fields).flatMap(([path, said]) => (said[0] ? [[fieldOf(path), said[0]]] : [])));
+    setErrors(known);
+    const stray = Object.keys(known).find((field) => !(field in draft));
+    if (stray) setFailed(known[stray] ?? null);
+  }
+
+  async function send(event: FormEvent) {
+    event.preventDefault();
+    setErrors({});
+    setFailed(null);
+    const number = (text: string) => typedNumber(text);
+    const words = (text: string) => (text.trim() === '' ? null : text.trim());
+    const topUp = draft.what === '' ? null : { what: draft.what, volume_l: number(draft.topUp) ?? NaN, gravity: typedGravity(draft.gravity), original_gravity: typedGravity(draft.original), batch_id: words(draft.from) };
+    const base = { at: fromLocal(draft.at, timeZone) ?? '', text: words(draft.text), client_id: clientId };
+    const vessel = {
+      ...(draft.vessel.trim() === '' ? {} : { vessel_l: number(draft.vessel) ?? NaN }),
+      ...(draft.tag.trim() === '' ? {} : { tag: number(draft.tag) }),
+      ...(draft.place.trim() === '' ? {} : { place: words(draft.place) }),
+      ...(draft.neck === '' ? {} : { neck: NECKS.find((neck) => neck === draft.neck) }),
+    };
+    const form = rack ? rackForm.safeParse({ ...base, left_l: number(draft.left) ?? NaN, vessel, top_up: topUp ? [topUp] : [], sulphite_g: number(draft.sulphite) }) : topUpBatchForm.safeParse({ ...base, top_up: topUp });
+    if (!form.success) {
+      const fields: Record<string, string[]> = {};
+      for (const issue of form.error.issues) (fields[issue.path.join('.')] ??= []).push(issue.message);
+      return tell(fields);
+    }
+    setSending(true);
+    try {
+      setMoved('left_l' in form.data ? await rackBatch(batch.id, form.data) : await topUpBatch(batch.id, form.data));
+    } catch (error) {
+      const told = error instanceof ClientError ? error : null;
+      if (told && Object.keys(told.fields).length > 0) tell(told.fields);
+      else setFailed(told?.message ?? 'It was not saved. Try again; saving twice keeps one.');
+    }
+    setSending(false);
+  }
+
+  if (moved) return <Effect moved={moved} />;
+  const field = (name: keyof typeof draft, label: string, unit?: string) => (
+    <Field label={label} {...(unit ? { unit, inputMode: 'decimal' as const } : {})} autoComplete="off" value={draft[name]} onChange={set(name)} error={errors[name]} />
+  );
+  return (
+    <form onSubmit={(event) => void send(event)} noValidate className="flex max-w-[600px] flex-col gap-4">
+      {rack && (
+        <>
+          {field('left', 'Left on the lees and in the hose', 'L')}
+          <fieldset className="grid grid-cols-2 gap-3">
+            <legend className="type-verdict mb-2">Into another vessel, where it changed</legend>
+            {field('vessel', `It holds (was ${batch.vessel_l})`, 'L')}
+            {field('tag', `Tag (was ${batch.tag ?? 'none'})`)}
+            {field('place', 'Place')}
+            <Select label="The neck now" value={draft.neck} onChange={set('neck')}>
+              <option value="">as it was</option>
+              {NECKS.map((neck) => (
+                <option key={neck} value={neck}>
+                  {NECK_WORDS[neck]}
+                </option>
+              ))}
+            </Select>
+          </fieldset>
+        </>
+      )}
+      <fieldset className="grid grid-cols-2 gap-3">
+        <legend className="type-verdict mb-2">Topped up with</legend>
+        <Select label="What" value={draft.what} onChange={set('what')}>
+          {rack && <option value="">nothing</option>}
+          <option value="water">water</option>
+          <option value="must">juice or must</option>
+          <option value="batch">another batch here</option>
+          <option value="drink">a drink from elsewhere</option>
+        </Select>
+        {draft.what !== '' && field('topUp', 'How much', 'L')}
+        {(draft.what === 'must' || draft.what === 'drink') && field('gravity', 'Its gravity', 'SG')}
+        {draft.what === 'drink' && field('original', 'Its original gravity', 'SG')}
+        {draft.what === 'batch' && (
+          <Select label="Which batch" className="col-span-full" value={draft.from} onChange={set('from')} error={errors.from}>
+            <option value="">Choose</option>
+            {(batches ?? [])
+              .filter((item) => item.id !== batch.id)
+              .map((item) => (
+                <option key={item.id} value={item.id}>
+                  {item.name}
+                </option>
+              ))}
+          </Select>
+        )}
+      </fieldset>
+      {rack && (
+        <>
+          {field('sulphite', 'Potassium metabisulphite with it', 'g')}
+          <p className="type-reason text-ink2">The sulphite dose stands under Additions. Keep air out: a full vessel and a hose that reaches the bottom.</p>
+        </>
+      )}
+      <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={draft.at} onChange={set('at')} error={errors.at} />
+      <Field label="Note" autoComplete="off" maxLength={2000} value={draft.text} onChange={set('text')} />
+      {failed && <FormError>{failed}</FormError>}
+      <div className="flex justify-end">
+        <Button look="first" type="submit" disabled={sending}>
+          {sending ? 'Saving' : rack ? 'Racked' : 'Topped up'}
+        </Button>
+      </div>
+    </form>
+  );
+}
