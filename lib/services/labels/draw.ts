@@ -12,6 +12,8 @@ const INK = '#111111';
 const PAPER = '#ffffff';
 const HAZE_EVERY = 2.4;
 const LINE = 1.1;
+/** Large, so that rounding is small. */
+const MEASURED_AT = 100;
 
 export interface Sheet {
   title: string;
@@ -31,7 +33,17 @@ function open(stock: Stock, title: string): { doc: Doc; measure: Measure; has: R
   const doc = new PDFDocument({ size: [stock.page.width * MM, stock.page.height * MM], margin: 0, autoFirstPage: false, font: fonts[0]?.path, info: { Title: title, Creator: 'Fallbright', Producer: 'Fallbright' }, lang: 'en' });
   for (const { font, path } of fonts) doc.registerFont(font, path);
   const has = new Set(fonts.map(({ font }) => font));
-  const measure: Measure = (text, face, size) => runsOf(text, face, has).reduce((sum, run) => sum + doc.font(run.font).fontSize(size).widthOfString(run.text), 0);
+  // A width grows with its size alone, and shaping a line is dear: each is measured once.
+  const widths = new Map<string, number>();
+  const measure: Measure = (text, face, size) => {
+    const key = `${face} ${text}`;
+    let width = widths.get(key);
+    if (width === undefined) {
+      width = runsOf(text, face, has).reduce((sum, run) => sum + doc.font(run.font).fontSize(MEASURED_AT).widthOfString(run.text), 0) / MEASURED_AT;
+      widths.set(key, width);
+    }
+    return width * size;
+  };
   return { doc, measure, has };
 }
 
