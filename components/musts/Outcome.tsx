@@ -141,7 +141,7 @@ export function Outcome({ result, kind, vesselL, missing }: { result: MustResult
         <Row
           name="sweetness"
           says={outcome.sweetness.from === outcome.sweetness.to ? SWEET_WORDS[outcome.sweetness.from] : `${SWEET_WORDS[outcome.sweetness.from]} to ${SWEET_WORDS[outcome.sweetness.to]}`}
-          between={`${ends(outcome.sugarLeftGPerL.value, 0)} g/L left`}
+          between={`${ends({ ...outcome.sugarLeftGPerL.value, lo: Math.max(0, outcome.sugarLeftGPerL.value.lo) }, 0)} g/L left`}
           how={outcome.sweetness.how}
         />
       </dl>
