@@ -9,6 +9,7 @@ import { Haze } from '@/components/ui/Haze';
 import { EmptyState, ErrorState } from '@/components/ui/Notice';
 import { LinkButton } from '@/components/ui/Button';
 import { useNow } from '@/components/ui/now';
+import { State } from '@/components/ui/StateMark';
 import { Vessel } from '@/components/vessel/Vessel';
 import type { VesselState } from '@/components/vessel/describe';
 import { useBench } from '@/lib/client/lots';
@@ -23,11 +24,11 @@ import { BenchForm } from './BenchForm';
 import { BottleIt } from './BottleIt';
 import { BottleTable } from './BottleTable';
 import { Done } from './Done';
-import { formOf, newDraft, requestOf, takeWay } from './draft';
+import { formOf, newDraft, requestOf, takeWay, type BenchErrors } from './draft';
 import { limitOf, scaleTop, Tubes } from './Tubes';
 import { Verdict, Ways } from './Verdict';
 import { Weeks } from './Weeks';
-import { SHORT_BOTTLE, sizeWords } from './words';
+import { FIELD_WORDS, SHORT_BOTTLE, sizeWords } from './words';
 
 /** The bench of one batch. */
 export function BenchPage({ id }: { id: string }) {
@@ -97,7 +98,7 @@ function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
           </div>
         </div>
       </div>
-      <div className="border-b-[1.5px] border-ink">{verdict ? <Verdict verdict={verdict} /> : <p className="type-verdict-now px-(--margin) py-6">Something on the bench is not filled in.</p>}</div>
+      <div className="border-b-[1.5px] border-ink">{verdict ? <Verdict verdict={verdict} /> : <Unfilled errors={errors ?? {}} />}</div>
       <div className="bg-desk px-(--margin) pb-4 wide:border-r-[1.5px] wide:border-ink">
         <Done facts={facts} timeZone={timeZone} />
         <BenchForm draft={draft} errors={errors ?? {}} facts={facts} onChange={(part) => setDraft((before) => ({ ...before, ...part }))} />
@@ -113,6 +114,22 @@ function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
         <Cautions />
       </div>
     </div>
+  );
+}
+
+/** Nothing is judged while something is missing; it says what. */
+function Unfilled({ errors }: { errors: BenchErrors }) {
+  const [path = '', wrong = ''] = Object.entries(errors)[0] ?? [];
+  const field = FIELD_WORDS[path.split('.').at(-1) ?? ''];
+  return (
+    <section aria-label="Verdict" className="bg-lit px-(--margin) py-4">
+      <State state="Check" word="Not judged yet" />
+      <h2 className="type-verdict-top">Nothing is filled until the bench knows this</h2>
+      <p className="type-body text-ink2">
+        {field ? `${field}: ` : ''}
+        {wrong}
+      </p>
+    </section>
   );
 }
 

@@ -40,3 +40,17 @@ export const EXPLAINED: Record<Explanation, string> = {
 
 /** `0.5 L`, `330 ml` */
 export const sizeWords = (ml: number) => (ml >= 500 ? `${Number((ml / 1000).toFixed(3))} L` : `${ml} ml`);
+
+/** A field of the bench by the contract's name, as the form calls it. */
+export const FIELD_WORDS: Record<string, string> = {
+  volume_l: 'In the vessel',
+  losses_l: 'Left on lees',
+  cellar_c: 'Cellar',
+  warmest_store_c: 'Warmest they stand',
+  warmest_since_end_c: 'Warmest since it finished',
+  size_ml: 'Size of a bottle',
+  at_hand: 'Bottles at hand',
+  confirmed_bar: 'Maker’s figure',
+  drops: 'Drops in each',
+  syrup_share: 'Sugar in the syrup',
+};

@@ -9,11 +9,13 @@ const HEIGHT = 220;
 const [TOP, FOOT] = [22, 26];
 
 /** The fall of the batch in its drink's colour, from the original gravity to where it ended. */
-export function FallPicture({ shared }: { shared: SharedBatch }) {
+export function FallPicture({ shared, now }: { shared: SharedBatch; now: number }) {
   const frame = useRef<HTMLDivElement>(null);
   const width = Math.max(220, useWidth(frame, 720));
   const read = shared.entries.flatMap((entry) => (entry.gravity === null ? [] : [{ at: Date.parse(entry.at) / 1000, gravity: entry.gravity }]));
-  const fitted = shared.curve.map((point) => ({ at: Date.parse(point.at) / 1000, gravity: point.gravity }));
+  // The curve goes on into the forecast; what has not happened is not shown to guests.
+  const until = (shared.ended_at ? Date.parse(shared.ended_at) : now) / 1000;
+  const fitted = shared.curve.filter((point) => Date.parse(point.at) / 1000 <= until).map((point) => ({ at: Date.parse(point.at) / 1000, gravity: point.gravity }));
   const measured = shared.series.at.flatMap((at, index) => {
     const gravity = shared.series.gravity[index];
     return gravity == null ? [] : [{ at, gravity }];

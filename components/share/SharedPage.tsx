@@ -65,7 +65,7 @@ function Shared({ shared, token, now }: { shared: SharedBatch; token: string; no
         </p>
       </div>
       <div className="px-(--margin)">
-        <FallPicture shared={shared} />
+        <FallPicture shared={shared} now={now} />
       </div>
       <dl className="grid grid-cols-2 border-y strip:grid-cols-4">
         {facts.map(([name, figure]) => (

@@ -31,7 +31,7 @@ function DayNight() {
 export function NavLinks({ places }: { places: readonly Place[] }) {
   const path = usePathname();
   return (
-    <nav aria-label="Main" className="flex gap-[26px] self-stretch">
+    <nav aria-label="Main" className="flex flex-wrap gap-x-4 self-stretch wide:gap-x-[22px]">
       {places.map((place) => {
         const here = isHere(place, path);
         return (

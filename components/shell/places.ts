@@ -1,10 +1,10 @@
 import type { ComponentType } from 'react';
-import { FlagIcon, FloatIcon, LinesIcon, RoundsIcon, SheetIcon, ShelfIcon } from '@/components/ui/icons';
+import { BookIcon, BottleIcon, FlagIcon, FloatIcon, LabelIcon, LinesIcon, RoundsIcon, SheetIcon, ShelfIcon } from '@/components/ui/icons';
 import type { Action } from '@/lib/core/actions';
 
 /** A page of the main navigation. */
 export interface Place {
-  href: '/shelf' | '/rounds' | '/musts' | '/alerts' | '/sensors' | '/settings';
+  href: '/shelf' | '/rounds' | '/musts' | '/bench' | '/labels' | '/book' | '/alerts' | '/sensors' | '/settings';
   name: string;
   icon: ComponentType<{ size?: number; className?: string }>;
   /** Things there that nobody has yet. */
@@ -25,6 +25,9 @@ export function placesFor(may: (action: Action) => boolean, openAlerts: number):
     { href: '/shelf', name: 'Shelf', icon: ShelfIcon, tab: true },
     ...(may('jobs.read') ? [{ href: '/rounds' as const, name: 'Rounds', icon: RoundsIcon, tab: true }] : []),
     ...(may('musts.read') ? [{ href: '/musts' as const, name: 'Musts', icon: SheetIcon }] : []),
+    ...(may('lots.bottle') ? [{ href: '/bench' as const, name: 'Bench', icon: BottleIcon }] : []),
+    ...(may('labels.print') ? [{ href: '/labels' as const, name: 'Labels', icon: LabelIcon }] : []),
+    ...(may('lots.read') ? [{ href: '/book' as const, name: 'Book', icon: BookIcon }] : []),
     ...(may('alerts.read') ? [{ href: '/alerts' as const, name: 'Alerts', icon: FlagIcon, count: openAlerts, tab: true }] : []),
     ...(may('sensors.read') ? [{ href: '/sensors' as const, name: 'Sensors', icon: FloatIcon, tab: true }] : []),
   ];

@@ -70,3 +70,21 @@ export const DayNightIcon = ({ night, ...props }: IconProps & { night: boolean }
     <path d="M25 2.2A5.6 5.6 0 1 0 25 11.8 6.4 6.4 0 0 1 25 2.2Z" fill={night ? 'currentColor' : 'none'} strokeLinejoin="round" />
   </svg>
 );
+
+export const BottleIcon = (props: IconProps) => (
+  <Icon {...props}>
+    <path d="M8.2 1.5h3.6v5c0 1.5 2.2 2.3 2.2 4.5v6.5c0 .6-.4 1-1 1H7c-.6 0-1-.4-1-1V11c0-2.2 2.2-3 2.2-4.5ZM6 12h8" />
+  </Icon>
+);
+
+export const LabelIcon = (props: IconProps) => (
+  <Icon {...props}>
+    <path d="M1.5 4.5h17v11h-17ZM1.5 6.5c5 1 6 6 17 6" />
+  </Icon>
+);
+
+export const BookIcon = (props: IconProps) => (
+  <Icon {...props}>
+    <path d="M3.5 2.5h13v15h-13ZM6.5 2.5v15M9.5 6.5h4M9.5 9.5h4" />
+  </Icon>
+);
