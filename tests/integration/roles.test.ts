@@ -8,16 +8,18 @@ import type { Role } from '@/lib/core/roles';
 import type { Call } from '@/lib/core/types';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildCellar, buildEntry, buildMember, buildSensor } from '../support/factories';
+import { jobRows } from '../support/job-rows';
+import { jobThings } from '../support/job-things';
 import { EVERYBODY, SHELF_SPAN, watchRows, type RoleRow, type Things } from '../support/role-rows';
 import { call, sessionCookie, startWeb, type Web } from '../support/web';
 
 const ROUTES = join(import.meta.dirname, '../../app/api/v1');
 
 /** A part of the API that brings routes brings its rows: name them here. */
-const TABLE: Partial<Record<EndpointName, RoleRow>> = { ...watchRows };
+const TABLE: Partial<Record<EndpointName, RoleRow>> = { ...watchRows, ...jobRows };
 
-/** Tested where they are at home: by a sensor's credential, in the open, as a stream. */
-const ELSEWHERE = new Set<string>(['postTelemetry', 'getOpenApi', 'streamEvents'] satisfies EndpointName[]);
+/** Tested where they are at home: by a sensor's credential, in the open, by an address that is the key, as a stream. */
+const ELSEWHERE = new Set<string>(['postTelemetry', 'getOpenApi', 'streamEvents', 'readCalendar', 'getShared', 'tasteShared'] satisfies EndpointName[]);
 
 const EVIDENCE: Call = { verdict: 'yes', kind: 'stuck', since: 0, expectedAt: null, headline: 'Warm it.', reason: 'No fall.', act: null, changesIt: null, evidence: [] };
 
@@ -28,7 +30,7 @@ async function things(cellarId: string, personId: string): Promise<Things> {
   const { sensor } = await buildSensor({ batch });
   const alert = await Alert.create({ cellarId, batchId: batch.id, call: 'stalled', kind: 'stuck', level: 'check', state: 'open', since: new Date(), openedAt: new Date(), evidence: EVIDENCE });
   const signIn = await SignIn.create({ personId, expiresAt: new Date(Date.now() + 3_600_000) });
-  return { batchId: batch.id, entryId: entry.id, sensorId: sensor.identifier, alertId: alert.id, signInId: signIn.id, cellarId };
+  return { batchId: batch.id, entryId: entry.id, sensorId: sensor.identifier, alertId: alert.id, signInId: signIn.id, cellarId, ...(await jobThings({ ...other, role: 'brewer' }, personId)) };
 }
 
 describe('who may do what', () => {
@@ -63,18 +65,22 @@ describe('who may do what', () => {
     expect(named.filter(({ call: key }) => !there.has(key)).map(({ call: key }) => key)).toEqual([]);
   });
 
+  /** Another cellar's things, for all rows: no request of a stranger may change them. */
+  let theirs: Promise<Things> | undefined;
+  const strangers = () => (theirs ??= buildMember('keeper').then((keeper) => things(keeper.cellarId, keeper.personId)));
+
   for (const [name, row] of Object.entries(TABLE)) {
     const endpoint = endpoints[name as EndpointName];
     it(`${endpoint.method} ${endpoint.path}: ${row.may.join(', ')}${row.names ? '; another cellar’s is not found' : ''}`, async () => {
       const ask = (things: Things, cookie?: string) => call(web, endpoint.method, `/api/v1${row.path(things)}`, { cookie, body: row.body?.(things) });
-      const foreignKeeper = await buildMember('keeper');
+      const foreign = await strangers();
 
       for (const role of EVERYBODY as Role[]) {
         const member = await buildMember(role);
-        const own = await things(member.cellarId, member.personId);
+        // Who may not is told so before anything of theirs is looked at.
+        const own = row.may.includes(role) || row.byService ? await things(member.cellarId, member.personId) : foreign;
         const { cookie } = await sessionCookie(member.personId);
         if (row.names && row.may.includes(role)) {
-          const foreign = await things(foreignKeeper.cellarId, foreignKeeper.personId);
           const answer = await ask(foreign, cookie);
           expect(answer.status, `${role}, another cellar’s`).toBe(404);
           expect(answer.body).toMatchObject({ type: 'urn:fallbright:problem:not-found', status: 404 });
@@ -84,7 +90,7 @@ describe('who may do what', () => {
         expect(answer.status, `${role}, own: ${JSON.stringify(answer.body)}`).toBe(row.may.includes(role) ? row.good : 403);
         if (answer.status === 403) expect(answer.headers.get('content-type')).toBe('application/problem+json');
       }
-      const answer = await ask(await things(foreignKeeper.cellarId, foreignKeeper.personId));
+      const answer = await ask(foreign);
       expect(answer.status, 'nobody').toBe(401);
     });
   }
@@ -94,11 +100,11 @@ describe('who may do what', () => {
     await things(mine.cellarId, mine.personId);
     const foreign = await things(theirs.cellarId, theirs.personId);
     const { cookie } = await sessionCookie(mine.personId);
-    for (const path of ['/batches', '/sensors', '/alerts', '/members', `/shelf?${SHELF_SPAN}`]) {
+    for (const path of ['/batches', '/sensors', '/alerts', '/members', `/shelf?${SHELF_SPAN}`, '/musts', '/catalogue', '/jobs', '/lots', '/lots.csv', '/places', '/shares']) {
       const answer = await call(web, 'GET', `/api/v1${path}`, { cookie });
       expect(answer.status).toBe(200);
       const text = JSON.stringify(answer.body);
-      for (const secret of [foreign.batchId, foreign.sensorId, foreign.alertId, theirs.person.email]) expect(text, path).not.toContain(secret);
+      for (const secret of [foreign.batchId, foreign.sensorId, foreign.alertId, theirs.person.email, foreign.mustId, foreign.itemId, foreign.jobId, foreign.lotId, foreign.placeId, foreign.shareId]) expect(text, path).not.toContain(secret);
     }
   });
 

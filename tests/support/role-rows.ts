@@ -1,5 +1,6 @@
 import type { EndpointName } from '@/lib/contracts/endpoints';
 import type { Role } from '@/lib/core/roles';
+import type { JobThings } from './job-things';
 
 export type Who = Role | 'nobody';
 export const EVERYBODY: Who[] = ['keeper', 'brewer', 'hand', 'guest'];
@@ -7,7 +8,7 @@ export const NOT_GUESTS: Who[] = ['keeper', 'brewer', 'hand'];
 export const BREWERS: Who[] = ['keeper', 'brewer'];
 
 /** One cellar's things, fresh for each request, so that one request does not decide the next. */
-export interface Things {
+export interface Things extends JobThings {
   batchId: string;
   entryId: string;
   sensorId: string;
@@ -23,6 +24,8 @@ export interface RoleRow {
   good: number;
   /** Names a thing of a cellar: with another cellar's it is 404 for all who may. */
   names?: boolean;
+  /** Who may is decided by the service, by whose the thing is: then it has to be one of the asker's own cellar. */
+  byService?: boolean;
   path(things: Things): string;
   body?(things: Things): unknown;
 }
@@ -49,7 +52,7 @@ export const watchRows = {
   listEntries: { may: EVERYBODY, good: 200, names: true, path: (t) => `/batches/${t.batchId}/entries` },
   createEntry: { may: NOT_GUESTS, good: 201, names: true, path: (t) => `/batches/${t.batchId}/entries`, body: () => ({ kind: 'note', at: '2026-03-01T00:00:00Z', text: 'Smells clean.' }) },
   // The entry is somebody else's: a hand may take back only an own one (403 by the service, tested below).
-  removeEntry: { may: BREWERS, good: 204, names: true, path: (t) => `/batches/${t.batchId}/entries/${t.entryId}` },
+  removeEntry: { may: BREWERS, good: 204, names: true, byService: true, path: (t) => `/batches/${t.batchId}/entries/${t.entryId}` },
   listSensors: { may: NOT_GUESTS, good: 200, path: () => '/sensors' },
   createSensor: { may: ['keeper'], good: 201, path: () => '/sensors', body: () => ({ name: 'Float' }) },
   getSensor: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/sensors/${t.sensorId}` },

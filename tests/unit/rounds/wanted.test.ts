@@ -9,7 +9,7 @@ const quiet: Call = { verdict: 'no', kind: null, since: null, expectedAt: null, 
 
 const input = (calls: Partial<Record<CallName, Partial<Call>>> = {}, over: Partial<RoundsInput> = {}): RoundsInput => ({
   name: 'Perry', neck: 'blow_off', stage: 'slowing', pitchedAt: AT - 5 * DAY, floatAt: AT, readAt: null, airlockAt: null, at: AT,
-  calls: Object.fromEntries(CALL_NAMES.map((name) => [name, { ...quiet, ...calls[name] }])) as RoundsInput['calls'],
+  calls: Object.fromEntries(CALL_NAMES.map((name) => [name, { ...quiet, ...calls[name] }])) as Record<CallName, Call>,
   ...over,
 });
 const titles = (...args: Parameters<typeof input>) => wantedJobs(input(...args)).map((job) => job.title);
