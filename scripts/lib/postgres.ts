@@ -66,8 +66,9 @@ export async function portIsFree(port: number, host = '127.0.0.1'): Promise<bool
 
 /** A free port below 32768, where the ephemeral range begins. */
 export async function freePort(from = 20_000): Promise<number> {
-  for (let port = from + Math.floor(Math.random() * 5_000); port < 32_000; port += 1) if (await portIsFree(port)) return port;
-  throw new Error('No free port below 32000.');
+  const highest = 32_700;
+  for (let port = from + Math.floor(Math.random() * Math.min(5_000, (highest - from) / 2)); port < highest; port += 1) if (await portIsFree(port)) return port;
+  throw new Error(`No free port below ${highest}.`);
 }
 
 /**

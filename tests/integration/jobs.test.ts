@@ -151,7 +151,8 @@ describe('a tick', () => {
   it('is of one cellar', async () => {
     const [mine, theirs] = [await buildMember('hand'), await buildMember('hand')];
     const job = await createJob(theirs, jobForm.parse({ title: 'Theirs', due_at: isoAt(NOON) }));
-    for (const attempt of [doJob(mine, job.id), undoJob(mine, job.id), takeJob(mine, job.id, true), snoozeJob(mine, job.id, isoAt(Date.now() + DAY)), dropJob(mine, job.id)]) await expect(attempt).rejects.toBeInstanceOf(NotFoundError);
+    const attempts = [() => doJob(mine, job.id), () => undoJob(mine, job.id), () => takeJob(mine, job.id, true), () => snoozeJob(mine, job.id, isoAt(Date.now() + DAY)), () => dropJob(mine, job.id)];
+    for (const attempt of attempts) await expect(attempt()).rejects.toBeInstanceOf(NotFoundError);
     await expect(createJob(mine, jobForm.parse({ title: 'x', due_at: isoAt(NOON), batch_id: (await buildBatch()).id }))).rejects.toBeInstanceOf(NotFoundError);
     expect(await titles(mine)).toEqual([]);
   });

@@ -61,14 +61,15 @@ it('judges a batch again and again though nothing is said', async () => {
 it('judges a batch only as often as asked after readings', async () => {
   const { cellar, batch, sensor, readings } = await warmBeer();
   await writeReadings(sensor.id, readings);
-  await start('--spacing-ms', '3000', '--tick-ms', '600000');
+  await start('--spacing-ms', '8000', '--tick-ms', '600000');
   const first = await until('the tick at the start', () => assessedAt(batch.id));
   for (let index = 0; index < 20; index += 1) await tell(cellar.id, batch.id);
   const second = await until('the judgement after readings', async () => {
     const at = await assessedAt(batch.id);
     return at === first ? null : at;
-  });
-  expect(second - first).toBeGreaterThanOrEqual(2);
+  }, 30_000);
+  // Counted from the beginning of a judgement, which itself takes a while on a busy machine.
+  expect(second - first).toBeGreaterThanOrEqual(3);
 });
 
 it('judges at once what a person logged', async () => {
