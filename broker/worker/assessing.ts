@@ -1,5 +1,5 @@
 import { systemClock } from '@/lib/clock';
-import { CHANGES_CHANNEL, changeSchema } from '@/lib/contracts/events';
+import { CHANGES_CHANNEL, changeSchema, type Change } from '@/lib/contracts/events';
 import { listen } from '@/db/listen';
 import { batchesToJudge } from '@/db/queries/batch-states';
 import { logFor } from '@/lib/log';
@@ -7,6 +7,9 @@ import { watchIngest } from '@/lib/services/alerts/watch-ingest';
 import { assessBatch } from '@/lib/services/batches/assess';
 import { startLoop } from './loop';
 import { Schedule } from './schedule';
+
+/** What a judgement is made from; it tells of itself, its alerts and its jobs too. */
+const JUDGED_BY: ReadonlySet<Change['kind']> = new Set<Change['kind']>(['reading', 'entry', 'batch', 'sensor']);
 
 const log = logFor('worker');
 
@@ -92,7 +95,7 @@ export function startAssessing({ spacingMs, tickMs, idleMs, onJudged }: Assessin
     channel: CHANGES_CHANNEL,
     onMessage: (payload) => {
       const change = parsed(payload);
-      if (!change?.batch || change.kind === 'assessment' || change.kind === 'alert') return;
+      if (!change?.batch || !JUDGED_BY.has(change.kind)) return;
       if (change.kind === 'reading') schedule.ask(change.batch, clock.now());
       else schedule.askSoon(change.batch, clock.now());
       loop.wake();

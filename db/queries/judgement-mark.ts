@@ -9,7 +9,7 @@ import { database } from '../client';
 export async function judgementMark(cellarId: string, batchId: string): Promise<string | null> {
   const [row] = await database().query<{ mark: string }>(
     `select md5(concat_ws('|', b, (select assessed_at from batch_states s where s.batch_id = b.id),
-       (select count(*) || ' ' || coalesce(max(e.created_at)::text, '') || ' ' || coalesce(max(e.removed_at)::text, '') || ' ' || coalesce(max(e.at)::text, '') from entries e where e.batch_id = b.id),
+       (select count(*) || ' ' || coalesce(max(e.created_at)::text, '') || ' ' || coalesce(max(e.removed_at)::text, '') || ' ' || coalesce(max(e.revised_at)::text, '') || ' ' || coalesce(max(e.at)::text, '') from entries e where e.batch_id = b.id),
        (select string_agg(concat_ws(' ', a.id, a.from_at, a.to_at), ',' order by a.id) from assignments a where a.batch_id = b.id))) as mark
      from batches b where b.id = $batchId and b.cellar_id = $cellarId`,
     { bind: { batchId, cellarId }, type: QueryTypes.SELECT },

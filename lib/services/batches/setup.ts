@@ -1,4 +1,5 @@
 import type { Batch, Entry } from '@/db/models';
+import type { EntryDetail, SUBSTANCES } from '@/lib/contracts/batches';
 import { EVENT_KINDS, type BatchEvent, type BatchSetup, type EventKind } from '@/lib/core/types';
 
 /** The columns that the judgement reads. */
@@ -6,16 +7,24 @@ export type BatchFacts = Pick<
   Batch,
   'kind' | 'pitchedAt' | 'originalGravity' | 'volumeL' | 'vesselL' | 'attenuationMinPercent' | 'attenuationMaxPercent' | 'alcoholToleranceAbv' | 'temperatureMinC' | 'temperatureMaxC' | 'neck'
 >;
-export type EntryFacts = Pick<Entry, 'kind' | 'at' | 'gravity' | 'volumeL' | 'sugarG' | 'fruitG' | 'neck' | 'createdAt'>;
+export type EntryFacts = Pick<Entry, 'kind' | 'at' | 'gravity' | 'volumeL' | 'sugarG' | 'fruitG' | 'neck' | 'createdAt'> & Partial<Pick<Entry, 'detail'>>;
 
-/** `observation` is a note; `pitch` is in the batch itself. */
-function kindOf(kind: string): EventKind | null {
+/** What goes in by the gram and feeds nothing. An enzyme may make new sugar, and fresh yeast may go on: they count as additions. */
+const INERT: ReadonlySet<string> = new Set<(typeof SUBSTANCES)[number]>(['nutrient', 'acid', 'chalk', 'tannin', 'sulphite', 'sorbate', 'fining', 'spice']);
+
+/** `observation` is a note; `pitch` is in the batch itself; a blend tops up with a drink. */
+function kindOf({ kind, sugarG, fruitG, volumeL, detail: kept }: EntryFacts): EventKind | null {
+  const detail = (kept ?? {}) as EntryDetail;
   if (kind === 'observation') return 'note';
+  if (kind === 'blend') return 'top_up';
+  // Off by up to 0.004 in a drink with alcohol: not good enough to pin a float to, or to call it finished by.
+  if (kind === 'reading' && detail.instrument === 'refractometer') return null;
+  if (kind === 'addition' && !sugarG && !fruitG && !volumeL && INERT.has(detail.substance ?? '')) return null;
   return (EVENT_KINDS as readonly string[]).includes(kind) ? (kind as EventKind) : null;
 }
 
 function eventOf(entry: EntryFacts): BatchEvent[] {
-  const kind = kindOf(entry.kind);
+  const kind = kindOf(entry);
   if (!kind) return [];
   const { sugarG, fruitG, volumeL, gravity, neck } = entry;
   return [{ at: entry.at.getTime(), kind, sugarG, fruitG, volumeL, gravity, neck, knownAt: entry.createdAt.getTime() }];

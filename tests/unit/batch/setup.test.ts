@@ -1,0 +1,23 @@
+import { describe, expect, it } from 'vitest';
+import { setupOf, type EntryFacts } from '@/lib/services/batches/setup';
+
+const batch = { kind: 'cider', pitchedAt: new Date(0), originalGravity: 1.05, volumeL: 4.5, vesselL: 5, attenuationMinPercent: null, attenuationMaxPercent: null, alcoholToleranceAbv: null, temperatureMinC: null, temperatureMaxC: null, neck: 'airlock' } as const;
+const entry = (over: Partial<EntryFacts>): EntryFacts => ({ kind: 'note', at: new Date(1000), gravity: null, volumeL: null, sugarG: null, fruitG: null, neck: null, createdAt: new Date(2000), detail: null, ...over });
+const kinds = (...entries: EntryFacts[]) => setupOf(batch, entries, 'UTC').events.map((event) => event.kind);
+
+describe('what the judgement reads of the log', () => {
+  it('takes a hydrometer’s reading and not a refractometer’s', () => {
+    expect(kinds(entry({ kind: 'reading', gravity: 1.01 }))).toEqual(['reading']);
+    expect(kinds(entry({ kind: 'reading', gravity: 1.01, detail: { instrument: 'refractometer', brix: 6 } }))).toEqual([]);
+  });
+
+  it('begins anew after what feeds, and not after a pinch of sulphite or acid', () => {
+    expect(kinds(entry({ kind: 'addition', detail: { substance: 'sulphite', grams: 0.3 } }))).toEqual([]);
+    expect(kinds(entry({ kind: 'addition', detail: { substance: 'nutrient', grams: 2 }, sugarG: 5 }))).toEqual(['addition']);
+    expect(kinds(entry({ kind: 'addition', sugarG: 100 }), entry({ kind: 'addition', detail: { substance: 'enzyme', grams: 1 } }))).toEqual(['addition', 'addition']);
+  });
+
+  it('counts what was blended in as topping up, and leaves what went out alone', () => {
+    expect(kinds(entry({ kind: 'blend', volumeL: 1, gravity: 1.002 }), entry({ kind: 'split', volumeL: 1 }), entry({ kind: 'fining' }), entry({ kind: 'bottling', volumeL: 4 }))).toEqual(['top_up']);
+  });
+});
