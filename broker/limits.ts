@@ -61,6 +61,7 @@ class Guard {
   private allowance: number;
   private allowanceAt: number;
   private timer: NodeJS.Timeout | undefined;
+  private readingOn = false;
 
   constructor(
     private readonly socket: Socket,
@@ -82,6 +83,9 @@ class Guard {
       this.close(broken);
       return null;
     };
+    // The library leaves a chunk unread while packets of the one before are open: a sender's ping behind
+    // readings that wait for the database would go unanswered, and its connection would be given up.
+    socket.on('readable', () => this.readOn());
     socket.once('close', () => clearTimeout(this.timer));
   }
 
@@ -94,6 +98,16 @@ class Guard {
   /** Tells the broker to try reading again. */
   wake(): void {
     if (!this.socket.destroyed) this.socket.emit('readable');
+  }
+
+  /** Asks the library to read until it does; what may be open at once is bounded here. */
+  private readOn(): void {
+    if (this.readingOn) return;
+    this.readingOn = true;
+    process.nextTick(() => {
+      for (let asked = 0; asked < this.limits.burst && this.signedIn && !this.socket.destroyed && this.socket.readableLength > 0 && this.mayRead(); asked += 1) this.wake();
+      this.readingOn = false;
+    });
   }
 
   /** Closes what takes too long. */

@@ -1,4 +1,5 @@
 import { QueryTypes } from 'sequelize';
+import { generate } from 'mqtt-packet';
 import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest';
 import type { MqttClient } from 'mqtt';
 import type { Limits } from '@/broker/limits';
@@ -35,6 +36,22 @@ async function sensorAndSecret() {
   const { sensor, secret } = await buildSensor();
   return { port: broker.port, sensor: sensor.identifier, secret };
 }
+
+describe('while the database keeps everybody waiting', () => {
+  it('answers a ping behind readings that came together', async () => {
+    const waiting = await startBroker({ host: '127.0.0.1', port: 0, record: () => new Promise(() => undefined) });
+    const own = { ...(await sensorAndSecret()), port: waiting.port };
+    const raw = await rawConnection(own.port);
+    raw.socket.write(connectPacket({ username: own.sensor, password: own.secret }));
+    await until('the CONNACK', () => raw.received().length >= 4);
+    const reading = generate({ cmd: 'publish', topic: readingsTopic(own.sensor), payload: JSON.stringify(good), qos: 1, messageId: 1, dup: false, retain: false });
+    raw.socket.write(Buffer.concat([reading, reading, reading]));
+    await until('the readings to wait', () => waiting.figures().waiting === 3);
+    raw.socket.write(generate({ cmd: 'pingreq' }));
+    await until('the PINGRESP', () => raw.received().subarray(4).equals(generate({ cmd: 'pingresp' })), 3_000);
+    await waiting.stop(0);
+  });
+});
 
 describe('signing in', () => {
   it('takes a sensor with its secret and stores what it publishes before it acknowledges', async () => {
