@@ -1,8 +1,8 @@
 import type { Metadata } from 'next';
-import { Settings } from '@/components/settings/Settings';
+import { SettingsIndex } from '@/components/settings/SettingsIndex';
 
 export const metadata: Metadata = { title: 'Settings' };
 
-export default function SettingsPage() {
-  return <Settings />;
+export default function SettingsIndexPage() {
+  return <SettingsIndex />;
 }

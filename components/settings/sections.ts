@@ -1,0 +1,20 @@
+import type { Action } from '@/lib/core/actions';
+
+/** A page of the settings. */
+export interface Section {
+  href: `/settings/${string}`;
+  name: string;
+  /** What is there, in a few words, for the page that lists them. */
+  says: string;
+  of: 'You' | 'The cellar';
+  /** Shown to those who may do this here; absent: to every member. */
+  needs?: Action;
+}
+
+/** In the order they are shown. A new page of the settings is one line here and its route below `app/(cellar)/settings`. */
+export const SECTIONS: readonly Section[] = [
+  { href: '/settings/security', name: 'Sign-in', says: 'passphrase, mail address, second factor, where you are signed in', of: 'You' },
+  { href: '/settings/people', name: 'People', says: 'who shares it, in which role, who is invited', of: 'The cellar', needs: 'members.read' },
+];
+
+export const sectionsFor = (may: (action: Action) => boolean): Section[] => SECTIONS.filter(({ needs }) => needs === undefined || may(needs));
