@@ -3,6 +3,9 @@ import { SequelizeStorage, Umzug } from 'umzug';
 import * as first from './migrations/0001-first-tables';
 import * as outboxRefusals from './migrations/0002-outbox-refusals';
 import * as wholeJob from './migrations/0003-the-whole-job';
+import * as judgement from './migrations/0004-judgement';
+import * as sensorsAndData from './migrations/0007-sensors-and-data';
+import * as messages from './migrations/0008-messages';
 import type { Migration, Run } from './migrations/types';
 
 /** In order. A migration that has landed is never edited; the next one mends it. */
@@ -10,6 +13,9 @@ const MIGRATIONS: ReadonlyArray<{ name: string; migration: Migration }> = [
   { name: '0001-first-tables', migration: first },
   { name: '0002-outbox-refusals', migration: outboxRefusals },
   { name: '0003-the-whole-job', migration: wholeJob },
+  { name: '0004-judgement', migration: judgement },
+  { name: '0007-sensors-and-data', migration: sensorsAndData },
+  { name: '0008-messages', migration: messages },
 ];
 
 /** Held while migrating, so that several processes that start together do it once. */

@@ -20,16 +20,21 @@ interface NewBatchState {
   batchId: string;
   cellarId: string;
   at: Date;
+  /** What it was judged from: `judgementMark` before the log was read. */
+  mark?: string | null;
   assessment: unknown;
+  /** As the shelf's lanes take them. */
   curve: unknown;
   expected: unknown;
+  /** As the batch page takes it. */
+  drawing?: unknown;
 }
 
-export async function saveBatchState({ batchId, cellarId, at, assessment, curve, expected }: NewBatchState, transaction: Transaction): Promise<void> {
+export async function saveBatchState({ batchId, cellarId, at, mark = null, assessment, curve, expected, drawing = null }: NewBatchState, transaction: Transaction): Promise<void> {
   await database().query(
-    `insert into batch_states (batch_id, cellar_id, assessed_at, assessment, curve, expected) values ($batchId, $cellarId, $at, $assessment, $curve, $expected)
-     on conflict (batch_id) do update set assessed_at = excluded.assessed_at, assessment = excluded.assessment, curve = excluded.curve, expected = excluded.expected`,
-    { bind: { batchId, cellarId, at, assessment: JSON.stringify(assessment), curve: JSON.stringify(curve), expected: JSON.stringify(expected) }, transaction },
+    `insert into batch_states (batch_id, cellar_id, assessed_at, mark, assessment, curve, expected, drawing) values ($batchId, $cellarId, $at, $mark, $assessment, $curve, $expected, $drawing)
+     on conflict (batch_id) do update set assessed_at = excluded.assessed_at, mark = excluded.mark, assessment = excluded.assessment, curve = excluded.curve, expected = excluded.expected, drawing = excluded.drawing`,
+    { bind: { batchId, cellarId, at, mark, assessment: JSON.stringify(assessment), curve: JSON.stringify(curve), expected: JSON.stringify(expected), drawing: drawing === null ? null : JSON.stringify(drawing) }, transaction },
   );
 }
 

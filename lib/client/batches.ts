@@ -19,9 +19,9 @@ export function useBatch(id: string | null) {
   return { batch: data, ...rest };
 }
 
-/** The judgement now, or as it was known at a past time, with its fitted curve, forecast and gas. */
+/** The judgement now, or as it was known at a past time, with its fitted curve, forecast and gas; asked for again while a newer one is on its way. */
 export function useJudgement(id: string | null, at?: string) {
-  const { data, ...rest } = useResource<JudgementBody>(id && withQuery(`/batches/${id}/judgement`, { at }));
+  const { data, ...rest } = useResource<JudgementBody>(id && withQuery(`/batches/${id}/judgement`, { at }), { refreshInterval: (latest?: JudgementBody) => (latest?.pending ? 1_000 : 0) });
   return { judgement: data, ...rest };
 }
 

@@ -38,11 +38,17 @@ export type AssessmentBody = z.infer<typeof assessmentSchema>;
 
 export const curvePointSchema = z.object({ at: z.string(), gravity: z.number(), lo: z.number(), hi: z.number() });
 
-/** The assessment with what a picture of it needs. */
-export const judgementSchema = assessmentSchema.extend({
+const drawnSchema = assessmentSchema.extend({
   curve: z.array(curvePointSchema),
   expected: z.array(curvePointSchema),
   gas: z.array(z.object({ at: z.string(), value: z.number() })),
+});
+/** The assessment with what a picture of it needs. */
+export type Drawn = z.infer<typeof drawnSchema>;
+
+export const judgementSchema = drawnSchema.extend({
+  /** Something was logged or changed since: a newer judgement is on its way, ask again in a second. */
+  pending: z.boolean(),
 });
 export type JudgementBody = z.infer<typeof judgementSchema>;
 
@@ -94,7 +100,7 @@ export function presentAssessment(assessment: Assessment): AssessmentBody {
 }
 
 /** The wire form of a judgement. */
-export function presentJudgement(judgement: Judgement): JudgementBody {
+export function presentJudgement(judgement: Judgement): Drawn {
   const point = (item: { at: Instant; gravity: number; lo: number; hi: number }) => ({
     at: iso(item.at),
     gravity: rounded(item.gravity, 5),

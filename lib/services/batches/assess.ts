@@ -5,8 +5,9 @@ import { Batch, Cellar, Entry } from '@/db/models';
 import { tryLockBatch } from '@/db/queries/alert-states';
 import { readingsOfBatch } from '@/db/queries/batch-readings';
 import { batchState, keepAssessment, saveBatchState } from '@/db/queries/batch-states';
+import { judgementMark } from '@/db/queries/judgement-mark';
 import { systemClock, type Clock } from '@/lib/clock';
-import { presentJudgement, type AssessmentBody, type JudgementBody } from '@/lib/contracts/assessment';
+import { presentJudgement, type AssessmentBody, type Drawn } from '@/lib/contracts/assessment';
 import { assess } from '@/lib/core/assess';
 import { CALL_NAMES, type CallName } from '@/lib/core/types';
 import { evaluateAlerts } from '@/lib/services/alerts/evaluate';
@@ -37,19 +38,23 @@ export function assessBatch(batchId: string, { clock = systemClock, silenceCount
     const batch = await Batch.findByPk(batchId, { transaction });
     if (!batch) return 'gone';
     const cellar = await Cellar.findByPk(batch.cellarId, { transaction, rejectOnEmpty: true });
-    const at = clock.now();
-    if (batch.state === 'ended') {
-      await evaluateAlerts({ batch, cellar, assessment: null, context: { neck: batch.neck, events: [], silenceCounts }, at }, transaction);
-      await jobsFromCalls(batch, null, [], at, transaction);
-      return 'ended';
-    }
-
+    const now = clock.now();
+    const ended = batch.state === 'ended';
+    // An ended batch stands as it ended.
+    const at = batch.endedAt?.getTime() ?? now;
+    // Before the log is read: what is written meanwhile makes the judgement out of date.
+    const mark = (await judgementMark(batch.cellarId, batchId, transaction)) ?? '';
     const entries = await Entry.findAll({ where: { batchId, removedAt: { [Op.is]: null } }, transaction });
     const readings = await readingsOfBatch(batchId, at, transaction);
     const setup = setupOf(batch, entries, cellar.timeZone);
     const judgement = assess(setup, readings, at);
 
-    await keep(batch, presentJudgement(judgement), new Date(at), transaction);
+    await keep(batch, presentJudgement(judgement), mark, new Date(at), transaction);
+    if (ended) {
+      await evaluateAlerts({ batch, cellar, assessment: null, context: { neck: batch.neck, events: [], silenceCounts }, at: now }, transaction);
+      await jobsFromCalls(batch, null, [], now, transaction);
+      return 'ended';
+    }
     await evaluateAlerts({ batch, cellar, assessment: judgement.assessment, context: { neck: batch.neck, events: setup.events, silenceCounts }, at }, transaction);
     await jobsFromCalls(batch, judgement.assessment, entries, at, transaction);
     return 'assessed';
@@ -57,10 +62,10 @@ export function assessBatch(batchId: string, { clock = systemClock, silenceCount
 }
 
 /** Keeps the judgement for the screens, and for later where a verdict changed; says so where anything did. */
-async function keep(batch: Batch, { curve, expected, gas: _, ...assessment }: JudgementBody, at: Date, transaction: Transaction): Promise<void> {
+async function keep(batch: Batch, { curve, expected, gas, ...assessment }: Drawn, mark: string, at: Date, transaction: Transaction): Promise<void> {
   const { id: batchId, cellarId } = batch;
   const before = (await batchState<AssessmentBody>(batchId, transaction))?.assessment ?? null;
-  await saveBatchState({ batchId, cellarId, at, assessment, curve: thinned(curve), expected: thinned(expected) }, transaction);
+  await saveBatchState({ batchId, cellarId, at, mark, assessment, curve: thinned(curve), expected: thinned(expected), drawing: { curve, expected, gas } }, transaction);
   const changed = changedCalls(before, assessment);
   if (changed.length) await keepAssessment({ cellarId, batchId, at, changed, assessment }, transaction);
   const same = before !== null && isDeepStrictEqual({ ...before, at: null }, { ...assessment, at: null });
