@@ -12,6 +12,20 @@ export const up: Migration['up'] = async (run) => {
       add column confirmed_version integer,
       add column confirmed_at timestamptz`);
 
+  // Room and foam probes stand beside the float that a batch is judged by; several may.
+  await run(`
+    create table probe_assignments (
+      id uuid primary key default gen_random_uuid(),
+      cellar_id uuid not null references cellars on delete cascade,
+      sensor_id integer not null references sensors on delete cascade,
+      batch_id uuid not null references batches on delete cascade,
+      from_at timestamptz not null,
+      to_at timestamptz,
+      check (to_at is null or to_at > from_at),
+      exclude using gist (sensor_id with =, tstzrange(from_at, to_at) with &&)
+    )`);
+  await run(`create index probe_assignments_batch on probe_assignments (batch_id)`);
+
   await run(`
     create table calibration_points (
       id uuid primary key default gen_random_uuid(),
@@ -168,7 +182,7 @@ export const down: Migration['down'] = async (run) => {
   await run(`alter table batches drop column import_id`);
   await run(`drop table if exists imports, sensor_limits, recalculations cascade`);
   await run(`alter table readings drop column gravity_sent, drop column calibration_id`);
-  await run(`drop table if exists calibrations, calibration_points cascade`);
+  await run(`drop table if exists calibrations, calibration_points, probe_assignments cascade`);
   await run(`
     alter table sensors
       drop column removed_at, drop column settings_version, drop column wanted_interval_s, drop column settings_at, drop column confirmed_version, drop column confirmed_at`);
