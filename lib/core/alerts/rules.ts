@@ -1,3 +1,4 @@
+import { spanWords } from '../calls/words';
 import type { CallName, EventKind, Neck, Stage, Verdict } from '../types';
 import type { Timing } from './machine';
 
@@ -27,8 +28,10 @@ export interface AlertRule extends Timing {
   freshMs: number | null;
   /** Those who were told that it began are told that it is over. */
   tellsEnd: boolean;
-  /** The rule as a person reads it. */
-  sentence: string;
+  /** What must be so, as a person reads it after "when"; the spans are added by `ruleWords`. */
+  when: string;
+  /** What ends it besides the condition being gone; null: nothing. */
+  until: string | null;
 }
 
 const MINUTE = 60_000;
@@ -49,41 +52,41 @@ const ANY = { kinds: null, notKinds: [], necks: null, notStages: [], doneBy: nul
 export const ALERT_RULES: readonly AlertRule[] = [
   {
     ...ANY, ...CHECK, name: 'overdue', call: 'started', verdicts: ['hold'], forMs: HOUR, keepMs: 3 * HOUR, freshMs: 12 * HOUR,
-    sentence: 'When a start is overdue for 1 h.',
+    when: 'a start is overdue', until: null,
   },
   {
     // A blow-off tube is made for foam, and an open vessel cannot be blocked: there foam is no news.
     ...ANY, ...ACT, name: 'foam', call: 'neck', verdicts: ['hold'], necks: ['airlock', 'bung'], forMs: 15 * MINUTE, keepMs: 3 * HOUR, freshMs: 6 * HOUR,
-    sentence: 'When foam may reach an airlock or a bung, for 15 min.',
+    when: 'foam may reach an airlock or a bung', until: null,
   },
   {
     ...ANY, ...KNOW, name: 'neck', call: 'neck', verdicts: ['yes'], necks: ['blow_off'], forMs: HOUR, keepMs: 3 * HOUR, freshMs: 12 * HOUR,
-    sentence: 'When the blow-off tube can make way for an airlock, for 1 h.',
+    when: 'the blow-off tube can make way for an airlock', until: null,
   },
   {
     ...ANY, ...CHECK, name: 'stalled', call: 'stalled', verdicts: ['yes'], forMs: HOUR, keepMs: 6 * HOUR, freshMs: 12 * HOUR,
-    sentence: 'When the fall is slow, stuck or stopped by cold for 1 h.',
+    when: 'the fall is slow, stuck or stopped by cold', until: null,
   },
   {
     ...ANY, ...CHECK, name: 'temperature', call: 'temperature', verdicts: ['yes', 'hold'], notStages: ['not_started', 'terminal'], forMs: HOUR, keepMs: 2 * HOUR, freshMs: 6 * HOUR,
-    sentence: 'When the temperature is outside the batch’s range for 1 h, until it is finished.',
+    when: 'the temperature is outside the batch’s range', until: 'the batch is finished',
   },
   {
     ...ANY, ...CHECK, name: 'sensor', call: 'sensor', verdicts: ['yes', 'hold'], forMs: 30 * MINUTE, keepMs: 30 * MINUTE, freshMs: null,
-    sentence: 'When the sensor is silent, frozen or drifting for 30 min.',
+    when: 'the sensor is silent, frozen or drifting', until: null,
   },
   {
     ...ANY, ...KNOW, name: 'rack', call: 'rack', verdicts: ['yes'], doneBy: 'rack', forMs: 3 * HOUR, keepMs: HOUR, freshMs: 36 * HOUR,
-    sentence: 'When it can be racked, for 3 h, until a racking is logged.',
+    when: 'it can be racked', until: 'a racking is logged',
   },
   {
     // Withdrawn at once and said aloud: somebody told "ready" may be washing bottles.
     ...ANY, ...KNOW, name: 'bottle', call: 'bottle', verdicts: ['yes'], notKinds: ['refermentation'], forMs: 6 * HOUR, keepMs: 0, freshMs: 36 * HOUR, tellsEnd: true,
-    sentence: 'When it can be bottled, for 6 h; and at once when that is no longer so.',
+    when: 'it can be bottled', until: null,
   },
   {
     ...ANY, ...ACT, name: 'refermentation', call: 'bottle', verdicts: ['yes', 'hold', 'no', 'soon'], kinds: ['refermentation'], forMs: 0, keepMs: DAY, freshMs: 36 * HOUR,
-    sentence: 'When a batch thought finished begins to fall again.',
+    when: 'a batch thought finished falls again', until: null,
   },
 ];
 
@@ -94,4 +97,38 @@ export function ruleNamed(name: string): AlertRule {
   const rule = BY_NAME.get(name as RuleName);
   if (!rule) throw new RangeError(`There is no alert rule ${name}.`);
   return rule;
+}
+
+/** What a keeper set for one rule, of the whole cellar or of one batch. Null spans: the usual. */
+export interface RuleSetting {
+  rule: RuleName;
+  ofBatch: boolean;
+  enabled: boolean;
+  /** Minutes. */
+  forMin: number | null;
+  keepMin: number | null;
+}
+
+/** The longest pending or keep time that can be set, min: two days. */
+export const LONGEST_SPAN_MIN = 2 * 24 * 60;
+
+/**
+ * A rule as it holds for a batch: its own setting goes before the cellar's, and
+ * what neither says is the usual. What can hurt someone is never told later
+ * than usual.
+ */
+export function ruleAsSet(rule: AlertRule, settings: readonly RuleSetting[]): { rule: AlertRule; enabled: boolean } {
+  const mine = settings.filter((item) => item.rule === rule.name);
+  const setting = mine.find((item) => item.ofBatch) ?? mine.find((item) => !item.ofBatch);
+  if (!setting) return { rule, enabled: true };
+  const forMs = setting.forMin === null ? rule.forMs : setting.forMin * MINUTE;
+  const keepMs = setting.keepMin === null ? rule.keepMs : setting.keepMin * MINUTE;
+  return { rule: { ...rule, forMs: rule.level === 'act' ? Math.min(forMs, rule.forMs) : forMs, keepMs }, enabled: setting.enabled };
+}
+
+/** The rule's two spans as sentences: when people are told, and when it is over. */
+export function ruleWords(rule: AlertRule): { begins: string; ends: string } {
+  const begins = rule.forMs === 0 ? `Told at once when ${rule.when}.` : `Told when ${rule.when} for ${spanWords(rule.forMs / HOUR)}.`;
+  const gone = rule.keepMs === 0 ? 'Over as soon as that is no longer so' : `Over when it has not been so for ${spanWords(rule.keepMs / HOUR)}`;
+  return { begins, ends: `${gone}${rule.until === null ? '' : `, or once ${rule.until}`}.` };
 }

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { lookAt, type LookContext } from '@/lib/core/alerts/look';
-import { ALERT_RULES, ruleNamed, type RuleName } from '@/lib/core/alerts/rules';
+import { ALERT_RULES, ruleNamed, type RuleName, ruleWords } from '@/lib/core/alerts/rules';
 import type { BatchEvent } from '@/lib/core/types';
 import { assessmentWith, callWith } from './assessments';
 
@@ -90,7 +90,9 @@ describe('what a judgement says about a rule', () => {
 describe('the rules', () => {
   it('each have a sentence, a first thing to do, and spans that make sense', () => {
     for (const rule of ALERT_RULES) {
-      expect(rule.sentence).toMatch(/^When .+\.$/);
+      const words = ruleWords(rule);
+      expect(words.begins).toMatch(/^Told .+\.$/);
+      expect(words.ends).toMatch(/^Over .+\.$/);
       expect(Math.min(rule.forMs, rule.keepMs)).toBeGreaterThanOrEqual(0);
       expect(rule.restMs).toBeGreaterThanOrEqual(6 * HOUR);
       expect(rule.level === 'know' ? rule.repeatMs : rule.repeats).toBe(rule.level === 'know' ? null : 3);
