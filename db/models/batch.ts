@@ -26,6 +26,8 @@ export class Batch extends Model<InferAttributes<Batch>, InferCreationAttributes
   declare mustVersionId: CreationOptional<string | null>;
   /** Part of what the must sheet made that is in this batch, 0 to 1. */
   declare mustShare: CreationOptional<number>;
+  /** The import that brought it; undone, it goes. */
+  declare importId: CreationOptional<string | null>;
   declare createdBy: CreationOptional<string | null>;
   declare createdAt: CreationOptional<Date>;
   declare updatedAt: CreationOptional<Date>;
@@ -56,6 +58,7 @@ export class Batch extends Model<InferAttributes<Batch>, InferCreationAttributes
         endedAt: DataTypes.DATE,
         mustVersionId: DataTypes.UUID,
         mustShare: DataTypes.DOUBLE,
+        importId: DataTypes.UUID,
         createdBy: DataTypes.UUID,
         createdAt: DataTypes.DATE,
         updatedAt: DataTypes.DATE,

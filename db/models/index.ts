@@ -5,11 +5,14 @@ import { AuditRow } from './audit-row';
 import { Batch } from './batch';
 import { BatchLink } from './batch-link';
 import { CalendarFeed } from './calendar-feed';
+import { CalibrationRow } from './calibration';
+import { CalibrationPointRow } from './calibration-point';
 import { CatalogueItem } from './catalogue-item';
 import { Cellar } from './cellar';
 import { Entry } from './entry';
 import { EntryRevision } from './entry-revision';
 import { FiningRun } from './fining-run';
+import { ImportRun } from './import-run';
 import { Job } from './job';
 import { Lot } from './lot';
 import { LotBottle } from './lot-bottle';
@@ -19,15 +22,20 @@ import { MustVersion } from './must-version';
 import { Opening } from './opening';
 import { OutboxMail } from './outbox-mail';
 import { Person } from './person';
+import { Photo } from './photo';
 import { Place } from './place';
+import { ProbeAssignment } from './probe-assignment';
 import { Sensor } from './sensor';
+import { SensorLimit } from './sensor-limit';
 import { Share } from './share';
 import { SignIn } from './sign-in';
 import { Tasting } from './tasting';
+import { Webhook } from './webhook';
+import { WebhookDelivery } from './webhook-delivery';
 
-export { Alert, Assignment, AuditRow, Batch, BatchLink, CalendarFeed, CatalogueItem, Cellar, Entry, EntryRevision, FiningRun, Job, Lot, LotBottle, Membership, Must, MustVersion, Opening, OutboxMail, Person, Place, Sensor, Share, SignIn, Tasting };
+export { Alert, Assignment, AuditRow, Batch, BatchLink, CalendarFeed, CalibrationPointRow, CalibrationRow, CatalogueItem, Cellar, Entry, EntryRevision, FiningRun, ImportRun, Job, Lot, LotBottle, Membership, Must, MustVersion, Opening, OutboxMail, Person, Photo, Place, ProbeAssignment, Sensor, SensorLimit, Share, SignIn, Tasting, Webhook, WebhookDelivery };
 
-const MODELS = [Alert, Assignment, AuditRow, Batch, BatchLink, CalendarFeed, CatalogueItem, Cellar, Entry, EntryRevision, FiningRun, Job, Lot, LotBottle, Membership, Must, MustVersion, Opening, OutboxMail, Person, Place, Sensor, Share, SignIn, Tasting];
+const MODELS = [Alert, Assignment, AuditRow, Batch, BatchLink, CalendarFeed, CalibrationPointRow, CalibrationRow, CatalogueItem, Cellar, Entry, EntryRevision, FiningRun, ImportRun, Job, Lot, LotBottle, Membership, Must, MustVersion, Opening, OutboxMail, Person, Photo, Place, ProbeAssignment, Sensor, SensorLimit, Share, SignIn, Tasting, Webhook, WebhookDelivery];
 
 /** Binds every model to a connection; the last one bound is the one they use. */
 export function initModels(sequelize: Sequelize): void {

@@ -6,9 +6,19 @@ export class Sensor extends Model<InferAttributes<Sensor>, InferCreationAttribut
   declare identifier: string;
   declare secretHash: Buffer;
   declare name: string;
-  declare kind: CreationOptional<'float'>;
+  /** `file`: carries what an import brought, and speaks to nobody. */
+  declare kind: CreationOptional<'float' | 'room' | 'foam' | 'file'>;
   declare intervalS: CreationOptional<number>;
   declare disabledAt: CreationOptional<Date | null>;
+  /** Removed sensors keep their row: what they measured stays where it counted. */
+  declare removedAt: CreationOptional<Date | null>;
+  /** Counts the settings that were sent down; 0: none were. */
+  declare settingsVersion: CreationOptional<number>;
+  declare wantedIntervalS: CreationOptional<number | null>;
+  declare settingsAt: CreationOptional<Date | null>;
+  /** The settings that the sensor itself said are in force. */
+  declare confirmedVersion: CreationOptional<number | null>;
+  declare confirmedAt: CreationOptional<Date | null>;
   declare createdAt: CreationOptional<Date>;
 
   static register(sequelize: Sequelize) {
@@ -22,6 +32,12 @@ export class Sensor extends Model<InferAttributes<Sensor>, InferCreationAttribut
         kind: DataTypes.TEXT,
         intervalS: DataTypes.INTEGER,
         disabledAt: DataTypes.DATE,
+        removedAt: DataTypes.DATE,
+        settingsVersion: DataTypes.INTEGER,
+        wantedIntervalS: DataTypes.INTEGER,
+        settingsAt: DataTypes.DATE,
+        confirmedVersion: DataTypes.INTEGER,
+        confirmedAt: DataTypes.DATE,
         createdAt: DataTypes.DATE,
       },
       { sequelize, tableName: 'sensors' },
