@@ -24,14 +24,18 @@ export interface DemoBatch {
   yeast: string | null;
   /** Written to the log by someone, hours after the pitch. */
   notes?: ReadonlyArray<{ atH: number; by: string; text: string }>;
+  /** Read by hand beside what the scenario logs, hours after the pitch. */
+  readAtH?: readonly number[];
+  /** A fining that runs when the demo opens: its first dose went in so many minutes before. */
+  fining?: { fining: string; dose: string; startedMinAgo: number };
 }
 
 /** In the order of their tags on the shelf. */
 export const DEMO_BATCHES: readonly DemoBatch[] = [
   { scenario: 'foaming', seed: 11, tag: 1, place: 'by the sink', yeast: 'dry cider yeast', notes: [{ atH: 30, by: 'Inga Farrow', text: 'Foam in the tube this morning; jar half full, emptied.' }] },
   { scenario: 'ready-to-rack', seed: 12, tag: 2, place: 'long shelf', yeast: 'dry cider yeast', notes: [{ atH: 400, by: 'Piet Marsh', text: 'Lees have gone tight and flat. Smells clean.' }] },
-  { scenario: 'racking', seed: 13, tag: 3, place: 'long shelf', yeast: 'red wine yeast' },
-  { scenario: 'finished', seed: 14, tag: 4, place: 'north wall', yeast: 'red wine yeast', notes: [{ atH: 60 * 24, by: 'Una Thorne', text: 'One can read print through it.' }] },
+  { scenario: 'racking', seed: 13, tag: 3, place: 'long shelf', yeast: 'red wine yeast', fining: { fining: 'two-part', dose: 'a teaspoon of each', startedMinAgo: 18 } },
+  { scenario: 'finished', seed: 14, tag: 4, place: 'north wall', yeast: 'red wine yeast', notes: [{ atH: 60 * 24, by: 'Una Thorne', text: 'One can read print through it.' }], readAtH: [88 * 24, 96 * 24 - 5] },
   { scenario: 'stuck-cold', seed: 15, tag: 5, place: 'back row by the door', yeast: 'dry ale yeast', notes: [{ atH: 98, by: 'Inga Farrow', text: 'Heat mat found unplugged. Plugged back in; not sure it is warming.' }] },
   { scenario: 'silent', seed: 16, tag: 6, place: 'back row', yeast: 'white wine yeast' },
   { scenario: 'in-lag', seed: 17, tag: 7, place: 'by the sink', yeast: 'white wine yeast' },

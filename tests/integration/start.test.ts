@@ -5,6 +5,7 @@ import { tmpdir } from 'node:os';
 import { join, resolve } from 'node:path';
 import { afterAll, describe, expect, it } from 'vitest';
 import { DEMO_BATCHES, DEMO_PASSPHRASE, DEMO_PEOPLE } from '@/db/seed/demo';
+import { DEMO_PAST } from '@/db/seed/past';
 import { freePort } from '@/scripts/lib/postgres';
 import { signInOverHttp } from '../support/web';
 
@@ -70,13 +71,13 @@ describe('bash scripts/start.sh', { timeout: 2 * PATIENCE_MS }, () => {
     try {
       await first.ready();
       expect(first.output).toContain(`Ready: ${web.url}`);
-      expect(first.output).toContain(`${DEMO_BATCHES.length} batches`);
+      expect(first.output).toContain(`${DEMO_BATCHES.length + DEMO_PAST.length} batches`);
       for (const { email } of DEMO_PEOPLE) expect(first.output).toContain(email);
       const signedIn = await signInOverHttp(web, { email: DEMO_PEOPLE[0]!.email, password: DEMO_PASSPHRASE });
       cookie = signedIn.cookie ?? '';
       expect(signedIn.error).toBeNull();
       const batches = (await (await fetch(`${web.url}/api/v1/batches`, { headers: { cookie } })).json()) as { items: unknown[] };
-      expect(batches.items).toHaveLength(DEMO_BATCHES.length);
+      expect(batches.items).toHaveLength(DEMO_BATCHES.length + DEMO_PAST.length);
       expect((await (await fetch(`http://127.0.0.1:${variables.MAILBOX_PORT}/api/mails`)).json()) as unknown).toHaveProperty('items');
     } finally {
       await first.stop();
@@ -88,7 +89,7 @@ describe('bash scripts/start.sh', { timeout: 2 * PATIENCE_MS }, () => {
       await second.ready();
       expect(second.output).not.toContain('demo cellar was filled');
       const batches = (await (await fetch(`${web.url}/api/v1/batches`, { headers: { cookie } })).json()) as { items: unknown[] };
-      expect(batches.items).toHaveLength(DEMO_BATCHES.length);
+      expect(batches.items).toHaveLength(DEMO_BATCHES.length + DEMO_PAST.length);
       const other = new Start(variables);
       expect(await other.ended).toBe(1);
       expect(other.output).toMatch(/already runs on/);

@@ -53,37 +53,40 @@ function allow(actor: Actor, request: BenchRequest, reason: string | null, now: 
 }
 
 /** Bottles a batch: judges it, fills the plan, and makes the lot with all that was judged. */
-export async function bottleBatch(actor: Actor, batchId: string, input: BottleBatchForm, clock: Clock = systemClock): Promise<LotBody> {
+export function bottleBatch(actor: Actor, batchId: string, input: BottleBatchForm, clock: Clock = systemClock): Promise<LotBody> {
+  return inTransaction((transaction) => bottleIn(actor, batchId, input, clock, transaction));
+}
+
+/** The same inside somebody's transaction. There is no other way to a lot. */
+export async function bottleIn(actor: Actor, batchId: string, input: BottleBatchForm, clock: Clock, transaction: Transaction): Promise<LotBody> {
   authorize(actor, 'lots.bottle');
   const at = notAhead(input.at, clock.now());
-  return inTransaction(async (transaction) => {
-    // The lock keeps two people from bottling the same drink twice.
-    const batch = await loadBatch(actor.cellarId, batchId, transaction);
-    const known = await sentBefore(actor.cellarId, input.client_id, transaction);
-    const before = known && detailOf(known).lot_id;
-    if (known && (known.batchId !== batchId || !before)) throw new ConflictError('This was sent for something else.');
-    if (before) return getLot(actor, before, clock, transaction);
-    if (batch.state === 'ended') throw new ConflictError('This batch is over: nothing is left to bottle.');
+  // The lock keeps two people from bottling the same drink twice.
+  const batch = await loadBatch(actor.cellarId, batchId, transaction);
+  const known = await sentBefore(actor.cellarId, input.client_id, transaction);
+  const before = known && detailOf(known).lot_id;
+  if (known && (known.batchId !== batchId || !before)) throw new ConflictError('This was sent for something else.');
+  if (before) return getLot(actor, before, clock, transaction);
+  if (batch.state === 'ended') throw new ConflictError('This batch is over: nothing is left to bottle.');
 
-    // Judged as things stand now, also where it was bottled earlier today.
-    const now = new Date(clock.now());
-    const state = await drinkState(batch, now, transaction);
-    const { request } = await benchRequest(state, input, transaction);
-    const judged = allow(actor, request, input.override_reason, now.getTime());
-    const place = input.place_id === null ? null : await roomFor(actor.cellarId, input.place_id, judged.plan.bottles, transaction);
-    if (place?.temperatureC !== null && place && place.temperatureC > input.warmest_store_c) {
-      throw new InvalidError('That place is warmer than the bottles were judged for.', { place_id: [`gets ${place.temperatureC} °C; judge the bench with that as the warmest place`] });
-    }
+  // Judged as things stand now, also where it was bottled earlier today.
+  const now = new Date(clock.now());
+  const state = await drinkState(batch, now, transaction);
+  const { request } = await benchRequest(state, input, transaction);
+  const judged = allow(actor, request, input.override_reason, now.getTime());
+  const place = input.place_id === null ? null : await roomFor(actor.cellarId, input.place_id, judged.plan.bottles, transaction);
+  if (place?.temperatureC !== null && place && place.temperatureC > input.warmest_store_c) {
+    throw new InvalidError('That place is warmer than the bottles were judged for.', { place_id: [`gets ${place.temperatureC} °C; judge the bench with that as the warmest place`] });
+  }
 
-    const lot = await writeLot({ actor, batch, input, state, request, judged, at, now, standsC: place?.temperatureC ?? input.cellar_c }, transaction);
-    await writeBottles(lot, judged, input.place_id, transaction);
-    await emptyVessel({ actor, batch, input, judged, at, now }, lot, transaction);
-    await lotJobs({ lot, primed: primes(request), overridden: judged.verdict === 'overridden', now }, transaction);
-    await auditBy(actor, judged.verdict === 'overridden' ? 'lot.bottled-against-a-stop' : 'lot.bottled', lot.id, { batch: batchId, code: lot.code, bottles: judged.plan.bottles, reason: judged.verdict === 'overridden' ? judged.reason : null }, transaction);
-    await notifyChange({ cellar: actor.cellarId, kind: 'lot', batch: batchId }, transaction);
-    await notifyChange({ cellar: actor.cellarId, kind: 'batch', batch: batchId }, transaction);
-    return getLot(actor, lot.id, clock, transaction);
-  });
+  const lot = await writeLot({ actor, batch, input, state, request, judged, at, now, standsC: place?.temperatureC ?? input.cellar_c }, transaction);
+  await writeBottles(lot, judged, input.place_id, transaction);
+  await emptyVessel({ actor, batch, input, judged, at, now }, lot, transaction);
+  await lotJobs({ lot, primed: primes(request), overridden: judged.verdict === 'overridden', now }, transaction);
+  await auditBy(actor, judged.verdict === 'overridden' ? 'lot.bottled-against-a-stop' : 'lot.bottled', lot.id, { batch: batchId, code: lot.code, bottles: judged.plan.bottles, reason: judged.verdict === 'overridden' ? judged.reason : null }, transaction);
+  await notifyChange({ cellar: actor.cellarId, kind: 'lot', batch: batchId }, transaction);
+  await notifyChange({ cellar: actor.cellarId, kind: 'batch', batch: batchId }, transaction);
+  return getLot(actor, lot.id, clock, transaction);
 }
 
 interface Bottling {

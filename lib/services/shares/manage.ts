@@ -1,4 +1,5 @@
 import { randomUUID } from 'node:crypto';
+import type { Transaction } from 'sequelize';
 import { Batch, Share } from '@/db/models';
 import { inTransaction } from '@/db/client';
 import { authorize } from '@/lib/auth/authorize';
@@ -37,22 +38,25 @@ function present(share: Share, batch: Pick<Batch, 'id' | 'name'>, names: Readonl
 }
 
 /** Makes a link to one batch, read only, until it expires or is revoked. */
-export async function createShare(actor: Actor, batchId: string, input: CreateShare, clock: Clock = systemClock): Promise<ShareBody> {
+export function createShare(actor: Actor, batchId: string, input: CreateShare, clock: Clock = systemClock): Promise<ShareBody> {
+  return inTransaction((transaction) => shareIn(actor, batchId, input, clock, transaction));
+}
+
+/** The same inside somebody's transaction. */
+export async function shareIn(actor: Actor, batchId: string, input: CreateShare, clock: Clock, transaction: Transaction): Promise<ShareBody> {
   authorize(actor, 'shares.manage');
   const now = clock.now();
-  return inTransaction(async (transaction) => {
-    const batch = await loadBatch(actor.cellarId, batchId, transaction);
-    if ((await Share.count({ where: { batchId, revokedAt: null }, transaction })) >= MOST_OPEN) throw new ConflictError(`A batch has at most ${MOST_OPEN} links. Revoke one first.`);
-    const id = randomUUID();
-    const share = await Share.create(
-      { id, cellarId: actor.cellarId, batchId, tokenHash: hashLinkToken(linkTokenOf('share', id)), expiresAt: new Date(now + input.expires_in_days * DAY_MS), showPeople: input.show_people, takesTastings: input.takes_tastings, createdBy: actor.personId, createdAt: new Date(now) },
-      { transaction },
-    );
-    await share.reload({ transaction });
-    await auditBy(actor, 'share.created', id, { batch: batchId, days: input.expires_in_days, people: input.show_people }, transaction);
-    await notifyChange({ cellar: actor.cellarId, kind: 'share', batch: batchId }, transaction);
-    return present(share, batch, await namesOf([share.createdBy], transaction), now);
-  });
+  const batch = await loadBatch(actor.cellarId, batchId, transaction);
+  if ((await Share.count({ where: { batchId, revokedAt: null }, transaction })) >= MOST_OPEN) throw new ConflictError(`A batch has at most ${MOST_OPEN} links. Revoke one first.`);
+  const id = randomUUID();
+  const share = await Share.create(
+    { id, cellarId: actor.cellarId, batchId, tokenHash: hashLinkToken(linkTokenOf('share', id)), expiresAt: new Date(now + input.expires_in_days * DAY_MS), showPeople: input.show_people, takesTastings: input.takes_tastings, createdBy: actor.personId, createdAt: new Date(now) },
+    { transaction },
+  );
+  await share.reload({ transaction });
+  await auditBy(actor, 'share.created', id, { batch: batchId, days: input.expires_in_days, people: input.show_people }, transaction);
+  await notifyChange({ cellar: actor.cellarId, kind: 'share', batch: batchId }, transaction);
+  return present(share, batch, await namesOf([share.createdBy], transaction), now);
 }
 
 /** The cellar's links, newest first, or those of one batch. */
