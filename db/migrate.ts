@@ -4,6 +4,7 @@ import * as first from './migrations/0001-first-tables';
 import * as outboxRefusals from './migrations/0002-outbox-refusals';
 import * as wholeJob from './migrations/0003-the-whole-job';
 import * as judgement from './migrations/0004-judgement';
+import * as people from './migrations/0006-people';
 import * as sensorsAndData from './migrations/0007-sensors-and-data';
 import * as messages from './migrations/0008-messages';
 import type { Migration, Run } from './migrations/types';
@@ -14,6 +15,7 @@ const MIGRATIONS: ReadonlyArray<{ name: string; migration: Migration }> = [
   { name: '0002-outbox-refusals', migration: outboxRefusals },
   { name: '0003-the-whole-job', migration: wholeJob },
   { name: '0004-judgement', migration: judgement },
+  { name: '0006-people', migration: people },
   { name: '0007-sensors-and-data', migration: sensorsAndData },
   { name: '0008-messages', migration: messages },
 ];

@@ -7,6 +7,8 @@ export class AuditRow extends Model<InferAttributes<AuditRow>, InferCreationAttr
   declare at: CreationOptional<Date>;
   declare action: string;
   declare subject: string;
+  declare address: CreationOptional<string | null>;
+  declare means: CreationOptional<string | null>;
   declare detail: CreationOptional<Record<string, unknown>>;
 
   static register(sequelize: Sequelize) {
@@ -18,6 +20,8 @@ export class AuditRow extends Model<InferAttributes<AuditRow>, InferCreationAttr
         at: DataTypes.DATE,
         action: DataTypes.TEXT,
         subject: DataTypes.TEXT,
+        address: DataTypes.TEXT,
+        means: DataTypes.TEXT,
         detail: DataTypes.JSONB,
       },
       { sequelize, tableName: 'audit' },

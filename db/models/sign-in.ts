@@ -7,6 +7,7 @@ export class SignIn extends Model<InferAttributes<SignIn>, InferCreationAttribut
   declare createdAt: CreationOptional<Date>;
   declare lastSeenAt: CreationOptional<Date>;
   declare expiresAt: Date;
+  declare idleS: CreationOptional<number>;
   declare endedAt: CreationOptional<Date | null>;
 
   static register(sequelize: Sequelize) {
@@ -18,6 +19,7 @@ export class SignIn extends Model<InferAttributes<SignIn>, InferCreationAttribut
         createdAt: DataTypes.DATE,
         lastSeenAt: DataTypes.DATE,
         expiresAt: DataTypes.DATE,
+        idleS: DataTypes.INTEGER,
         endedAt: DataTypes.DATE,
       },
       { sequelize, tableName: 'sign_ins' },
