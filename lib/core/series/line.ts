@@ -110,10 +110,11 @@ export function robustLine(t: Float64Array, g: Float64Array, from: number, to: n
   for (let round = 0; round < ROUNDS; round += 1) {
     for (let i = 0; i < n; i += 1) {
       const r = g[from + i]! - a - b * (t[from + i]! - middle);
-      residuals[i] = r;
+      residuals[i] = r < 0 ? -r : r;
       scratch[i] = r < 0 ? -r : r;
     }
-    sigma = Math.max(SIGMA_FLOOR, 1.4826 * medianInPlace(scratch, 0, n));
+    // The scale settles before the line does.
+    if (round < 2) sigma = Math.max(SIGMA_FLOOR, 1.4826 * medianInPlace(scratch, 0, n));
     const knee = HUBER_K * sigma;
     const cut = 6 * sigma + 0.5;
     let sw = 0;
@@ -122,7 +123,7 @@ export function robustLine(t: Float64Array, g: Float64Array, from: number, to: n
     let stt = 0;
     let stg = 0;
     for (let i = 0; i < n; i += 1) {
-      const r = residuals[i]! < 0 ? -residuals[i]! : residuals[i]!;
+      const r = residuals[i]!;
       const w = r <= knee ? 1 : r > cut ? 0 : knee / r;
       weights[i] = w;
       const x = t[from + i]! - middle;
@@ -137,8 +138,8 @@ export function robustLine(t: Float64Array, g: Float64Array, from: number, to: n
     if (!(det > 1e-9 * sw)) return null;
     const slope = (sw * stg - st * sg) / det;
     const shift = (sg - slope * st) / sw;
-    // Closer than a hundredth of the least standard error.
-    const still = Math.abs(slope - b) < 2e-5 && Math.abs(shift) < 2e-3;
+    // Closer than a twentieth of the least standard error.
+    const still = Math.abs(slope - b) < 1e-4 && Math.abs(shift) < 5e-3;
     b = slope;
     a += shift;
     if (still) break;

@@ -14,8 +14,10 @@ export interface Tail {
 /** Pace times age of a tail, log-normal about 6 (own simulations: 4 to 12, one in ten outside), our own prior. */
 const PACE_MEDIAN = 6;
 const PACE_SPREAD = 0.6;
-/** Paces tried, as multiples of 1/age: evenly spaced in the logarithm. */
-const PACES = [1, 1.6, 2.5, 4, 6.3, 10, 16, 25];
+/** Paces tried, as multiples of 1/age, about evenly spaced in the logarithm. Each pair is twice the pair before, so that its exponentials are the squares of theirs. */
+const PACES = [1, 1.5, 2, 3, 4, 6, 8, 12, 16, 24];
+/** Exponents are cut here, so that their squares stay numbers. */
+const STEEPEST = 30;
 /** Noise that hangs together over hours leaves fewer independent bins than there are. */
 const CORRELATION_MOST = 0.9;
 
@@ -24,6 +26,9 @@ let weights = new Float64Array(size);
 let residuals = new Float64Array(size);
 let scratch = new Float64Array(size);
 let basis = new Float64Array(size);
+/** The bases of the two paces before, by turns. */
+let even = new Float64Array(size);
+let odd = new Float64Array(size);
 
 interface Line2 {
   a: number;
@@ -70,13 +75,15 @@ export function fitTail(t: Float64Array, g: Float64Array, from: number, to: numb
     residuals = new Float64Array(size);
     scratch = new Float64Array(size);
     basis = new Float64Array(size);
+    even = new Float64Array(size);
+    odd = new Float64Array(size);
   }
   weights.fill(1, 0, n);
   let sigma = 0.3;
   let rho = 0;
   // Weights against bubbles from the middle pace; the shape matters little for them.
   for (let round = 0; round < 3; round += 1) {
-    setBasis(t, from, n, now, PACE_MEDIAN / ageDays);
+    setBasis(t, from, n, now, PACE_MEDIAN / ageDays, basis);
     const fit = solve(g, from, n);
     if (!fit) return null;
     for (let i = 0; i < n; i += 1) {
@@ -108,9 +115,13 @@ export function fitTail(t: Float64Array, g: Float64Array, from: number, to: numb
   let logs = 0;
   let best = Number.POSITIVE_INFINITY;
   const found: { b: number; v: number; cost: number; lambda: number }[] = [];
-  for (const multiple of PACES) {
+  for (let k = 0; k < PACES.length; k += 1) {
+    const multiple = PACES[k]!;
     const lambda = multiple / ageDays;
-    setBasis(t, from, n, now, lambda);
+    const kept = k % 2 === 0 ? even : odd;
+    if (k < 2) setBasis(t, from, n, now, lambda, kept);
+    else for (let i = 0; i < n; i += 1) kept[i] = Math.min(1e120, kept[i]! * kept[i]!);
+    basis.set(kept.subarray(0, n));
     const fit = solve(g, from, n);
     if (!fit) continue;
     let sum = 0;
@@ -136,6 +147,6 @@ export function fitTail(t: Float64Array, g: Float64Array, from: number, to: numb
   return { remaining: mean, sd: Math.sqrt(Math.max(0, second / total - mean * mean)), likely: Math.exp(logs / total), pace: pace / total };
 }
 
-function setBasis(t: Float64Array, from: number, n: number, now: number, lambda: number): void {
-  for (let i = 0; i < n; i += 1) basis[i] = Math.exp(Math.min(30, (lambda * (now - t[from + i]!)) / 24));
+function setBasis(t: Float64Array, from: number, n: number, now: number, lambda: number, out: Float64Array): void {
+  for (let i = 0; i < n; i += 1) out[i] = Math.exp(Math.min(STEEPEST, (lambda * (now - t[from + i]!)) / 24));
 }

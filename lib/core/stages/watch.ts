@@ -73,8 +73,6 @@ export class Watch extends Intake {
 
   private judgePeak(hour: number): void {
     if (this.peaked.on) return;
-    // A drift or the first small fall has no peak.
-    const early = this.progress() < 0.12;
     let below = false;
     for (const window of [12, 18, 24, 36]) {
       const line = this.line(window);
@@ -93,7 +91,8 @@ export class Watch extends Intake {
       this.maxFittedRate = Math.max(this.maxFittedRate * 0.98, now);
       fitted = now < 0.8 * this.maxFittedRate && fit.curve.share(tau) < 0.78;
     }
-    hold(this.peaked, hour, (below || fitted) && !early, 2, false);
+    // A drift or the first small fall has no peak.
+    hold(this.peaked, hour, (below || fitted) && this.progress() >= 0.12, 2, false);
   }
 
   private judgeAirlock(hour: number): void {
@@ -168,8 +167,8 @@ export class Watch extends Intake {
     const slow = (line: Line | null, rate: number, upper: number): boolean =>
       line !== null && -line.slope < rate && -line.slope + 1.64 * line.se < upper;
     const settled = this.quietSinceAddition(60, 120);
-    const begun = this.progress(level) > 0.12 || hour - (this.started.since ?? hour) > 96;
-    const flat = level > limit && settled && begun && (slow(line48, 0.5, 0.75) || slow(this.line(72), 0.35, 0.5));
+    const begun = (): boolean => hour - (this.started.since ?? hour) > 96 || this.progress(level) > 0.12;
+    const flat = level > limit && settled && (slow(line48, 0.5, 0.75) || slow(this.line(72), 0.35, 0.5)) && begun();
     const moving =
       this.stuck.on &&
       [8, 24].some((window) => {
@@ -197,14 +196,15 @@ export class Watch extends Intake {
     // A batch that was sweetened may well work again; any other falls for good reason only when it is plain.
     const drop = this.sweetened ? 1.5 : 2.5;
     const pace = this.sweetened ? 0.25 : 0.5;
-    const falls = [24, 48].some((window) => {
-      const line = this.line(window);
-      return line !== null && line.slope + 2 * line.se < -pace;
-    });
+    const falls = (): boolean =>
+      [24, 48].some((window) => {
+        const line = this.line(window);
+        return line !== null && line.slope + 2 * line.se < -pace;
+      });
     const line48 = this.line(48);
     const still = line48 !== null && -line48.slope + line48.se < 0.3 && Math.abs(line48.slope) < 0.15;
     const wasOn = this.refermenting.on;
-    hold(this.refermenting, hour, level < this.plateau - drop && falls && !this.stabilised, 3, still || this.stabilised);
+    hold(this.refermenting, hour, level < this.plateau - drop && !this.stabilised && falls(), 3, still || this.stabilised);
     if (wasOn && !this.refermenting.on) this.plateau = level;
   }
 }
