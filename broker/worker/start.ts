@@ -5,6 +5,7 @@ import { dropWhatIsOld } from '@/lib/services/housekeeping';
 import { startHeartbeat } from '../heartbeat';
 import { keepPartitionsAhead } from '../keep-partitions';
 import { startAssessing } from './assessing';
+import { startRecalculating } from './recalculating';
 import { startSending } from './sending';
 
 const log = logFor('worker');
@@ -38,6 +39,7 @@ export function startWorker({ spacingMs, tickMs, idleMs, sendTimeoutMs }: Worker
   });
   const assessing = startAssessing({ spacingMs, tickMs, idleMs, onJudged: () => sending.wake() });
   const stopHeartbeat = startHeartbeat('worker', () => ({ ...assessing.figures(), ...sending.figures() }));
+  const recalculating = startRecalculating();
   const stopPartitions = keepPartitionsAhead();
   const tidy = () => void dropWhatIsOld().catch((error: unknown) => log.warn({ err: error }, 'old rows could not be dropped; tried again in an hour'));
   tidy();
@@ -47,7 +49,7 @@ export function startWorker({ spacingMs, tickMs, idleMs, sendTimeoutMs }: Worker
     stop: async () => {
       clearInterval(tidying);
       stopPartitions();
-      await Promise.all([assessing.stop(), sending.stop()]);
+      await Promise.all([assessing.stop(), recalculating.stop(), sending.stop()]);
       stopHeartbeat();
     },
   };

@@ -6,6 +6,9 @@ export interface ReadingRow {
   /** ms since 1970. */
   receivedAt: number;
   reading: Measured;
+  /** The calibration that made `gravity`, and what was sent in its place; null or absent: it stands as it was sent. */
+  calibrationId?: number | null;
+  gravitySent?: number | null;
 }
 
 /** What a sensor measured, in the units of the contract; null where it said nothing. */
@@ -41,13 +44,13 @@ const STATEMENT = {
   text: `
 with input as materialized (
   select sensor_id, to_timestamp(measured) as measured_at, to_timestamp(received) as received_at,
-         gravity, temperature, battery, signal, inclination, foam, sequence
-  from unnest($1::int[], $2::float8[], $3::float8[], $4::float8[], $5::real[], $6::real[], $7::real[], $8::real[], $9::real[], $10::bigint[])
-    as t (sensor_id, measured, received, gravity, temperature, battery, signal, inclination, foam, sequence)
+         gravity, temperature, battery, signal, inclination, foam, sequence, calibration_id, gravity_sent
+  from unnest($1::int[], $2::float8[], $3::float8[], $4::float8[], $5::real[], $6::real[], $7::real[], $8::real[], $9::real[], $10::bigint[], $18::int[], $19::float8[])
+    as t (sensor_id, measured, received, gravity, temperature, battery, signal, inclination, foam, sequence, calibration_id, gravity_sent)
   order by sensor_id, to_timestamp(measured)
 ), stored as (
-  insert into readings (sensor_id, measured_at, received_at, gravity, temperature, battery, signal, inclination, foam, sequence)
-  select sensor_id, measured_at, received_at, gravity, temperature, battery, signal, inclination, foam, sequence from input
+  insert into readings (sensor_id, measured_at, received_at, gravity, temperature, battery, signal, inclination, foam, sequence, calibration_id, gravity_sent)
+  select sensor_id, measured_at, received_at, gravity, temperature, battery, signal, inclination, foam, sequence, calibration_id, gravity_sent from input
   on conflict do nothing
   returning sensor_id, measured_at
 ), latest as (
@@ -103,6 +106,8 @@ export async function recordReadings(sequelize: Sequelize, readings: readonly Re
     refusals.map((row) => row.body),
     numbers(tell, (id) => id),
     numbers(tell.filter((id) => refusedSensors.has(id)), (id) => id),
+    numbers(readings, (row) => row.calibrationId ?? null),
+    numbers(readings, (row) => row.gravitySent ?? null),
   ], transaction);
   return result.rows[0]?.stored ?? 0;
 }

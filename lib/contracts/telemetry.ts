@@ -14,20 +14,33 @@ export const REFUSED_KEPT_DAYS = 30;
 /** A number inside its span, with one sentence for all that can be wrong with it. */
 const span = (low: number, high: number) => z.number(`must be a number from ${low} to ${high}`).min(low, `must be ${low} to ${high}`).max(high, `must be ${low} to ${high}`);
 
-/** One reading as a sensor sends it. Unknown keys are dropped. */
-export const reading = z
-  .object({
-    at: z.iso.datetime({ offset: true, error: 'at must be RFC 3339 with a zone, such as 2026-03-04T06:00:00Z' }).optional(),
-    gravity: gravity.optional(),
-    inclination: span(0, 90).optional(),
-    temperature: temperatureC,
-    battery: span(0, 15).optional(),
-    signal: span(-130, 0).optional(),
-    foam: span(0, 500).optional(),
-    sequence: z.number('must be a whole number').int('must be a whole number').min(0, 'must not be negative').max(Number.MAX_SAFE_INTEGER, 'is too large').optional(),
-  })
-  .refine((value) => value.gravity !== undefined || value.inclination !== undefined, { error: 'gravity or inclination is required', path: ['gravity'] });
+const fields = z.object({
+  at: z.iso.datetime({ offset: true, error: 'at must be RFC 3339 with a zone, such as 2026-03-04T06:00:00Z' }).optional(),
+  gravity: gravity.optional(),
+  inclination: span(0, 90).optional(),
+  temperature: temperatureC,
+  battery: span(0, 15).optional(),
+  signal: span(-130, 0).optional(),
+  foam: span(0, 500).optional(),
+  sequence: z.number('must be a whole number').int('must be a whole number').min(0, 'must not be negative').max(Number.MAX_SAFE_INTEGER, 'is too large').optional(),
+  settings: z.number('must be a whole number').int('must be a whole number').min(0, 'must not be negative').max(2_147_483_647, 'is too large').optional(),
+});
+
+/** One reading as a float sends it. Unknown keys are dropped. */
+export const reading = fields.refine((value) => value.gravity !== undefined || value.inclination !== undefined, { error: 'gravity or inclination is required', path: ['gravity'] });
 export type TelemetryReading = z.infer<typeof reading>;
+/** Of a room probe: temperature alone. */
+export const roomReading = fields;
+/** Of a foam probe. */
+export const foamReading = fields.refine((value) => value.foam !== undefined, { error: 'foam is required', path: ['foam'] });
+
+/** What goes down to a sensor, retained on its settings topic and in the answer over HTTP. It confirms by sending `settings: <version>` with its readings. */
+export const sensorSettings = z.object({
+  version: z.number().int(),
+  /** How often to speak, s. */
+  interval_s: z.number().int(),
+});
+export type SensorSettings = z.infer<typeof sensorSettings>;
 
 /**
  * RFC 8428 (SenML JSON), the records that a float sensor uses. Base values (bn,
@@ -52,5 +65,7 @@ export const telemetryResult = z.object({
   stored: z.number().int(),
   duplicates: z.number().int(),
   refused: z.array(refusal),
+  /** Where the cellar wants the sensor to be set otherwise than it was made. */
+  settings: sensorSettings.optional(),
 });
 export type TelemetryResult = z.infer<typeof telemetryResult>;

@@ -3,9 +3,12 @@ import { ensurePartitions, monthOf, type Month } from '@/db/queries/partitions';
 import { recordReadings, type ReadingRow, type RefusalRow } from '@/db/queries/record-readings';
 import { isAboutTheRows, isMissingPartition } from '@/db/sqlstate';
 import type { SensorIdentity } from '@/lib/auth/sensors';
+import { systemClock } from '@/lib/clock';
 import { REFUSED_BODY_BYTES } from '@/lib/contracts/telemetry';
+import { confirmSettings, type Confirmation, type SensorNotes } from '@/db/queries/sensor-book';
 import type { Announcer } from './announcer';
 import { parseMessage, type BodyForm, type ParsedMessage, type Refused } from './parse';
+import { calibrated, notesOf } from './sensor-book';
 
 /** A message as it came in, by whichever door. */
 export interface Message {
@@ -36,17 +39,25 @@ export interface Recorded {
  * the same batch may be given again.
  */
 export async function recordMessages(messages: readonly Message[], announcer?: Announcer): Promise<Recorded> {
-  const parsed = messages.map(parse);
+  const sensors = messages.flatMap((message) => (message.sensor ? [message.sensor.id] : []));
+  const notes = await notesOf(sensors, systemClock.now());
+  const parsed = messages.map((message) => parse(message, message.sensor && notes.get(message.sensor.id)));
   const readings: ReadingRow[] = [];
   const refusals: RefusalRow[] = [];
   messages.forEach((message, index) => {
     const { accepted, refused } = parsed[index]!;
-    for (const reading of accepted) readings.push({ sensorId: message.sensor!.id, receivedAt: message.arrivedAt, reading });
+    const calibrations = (message.sensor && notes.get(message.sensor.id)?.calibrations) ?? [];
+    for (const sent of accepted) {
+      const { gravity, calibrationId, gravitySent } = calibrated(calibrations, sent.measuredAt, sent);
+      readings.push({ sensorId: message.sensor!.id, receivedAt: message.arrivedAt, reading: gravity === sent.gravity ? sent : { ...sent, gravity }, calibrationId, gravitySent });
+    }
     for (const { reason, body } of refused) refusals.push({ sensorId: message.sensor?.id ?? null, receivedAt: message.arrivedAt, road: message.road, reason, body });
   });
 
   try {
     const stored = await write(readings, refusals, messages, announcer);
+    const confirmations = confirmedBy(messages, parsed, notes);
+    if (confirmations.length > 0) await confirmSettings(confirmations);
     return { stored, duplicates: readings.length - stored, refused: parsed.map((message) => message.refused) };
   } catch (error) {
     if (!isAboutTheRows(error)) throw error;
@@ -54,10 +65,21 @@ export async function recordMessages(messages: readonly Message[], announcer?: A
   }
 }
 
-function parse(message: Message): ParsedMessage {
+function parse(message: Message, notes: SensorNotes | null | undefined): ParsedMessage {
   const because = message.refusedBecause ?? (message.sensor ? undefined : 'no sensor has this name');
-  if (because) return { accepted: [], refused: [{ index: 0, reason: because, body: Buffer.from(message.body.subarray(0, REFUSED_BODY_BYTES)) }] };
-  return parseMessage(message.body, message.arrivedAt, message.form);
+  if (because) return { accepted: [], refused: [{ index: 0, reason: because, body: Buffer.from(message.body.subarray(0, REFUSED_BODY_BYTES)) }], settings: null };
+  return parseMessage(message.body, message.arrivedAt, message.form, notes?.kind);
+}
+
+/** What sensors newly say of their settings. */
+function confirmedBy(messages: readonly Message[], parsed: readonly ParsedMessage[], notes: ReadonlyMap<number, SensorNotes>): Confirmation[] {
+  const latest = new Map<number, Confirmation>();
+  messages.forEach(({ sensor, arrivedAt }, index) => {
+    const version = parsed[index]?.settings ?? null;
+    if (!sensor || version === null || version === notes.get(sensor.id)?.confirmedVersion) return;
+    if (version > (latest.get(sensor.id)?.version ?? -1)) latest.set(sensor.id, { sensorId: sensor.id, version, at: arrivedAt });
+  });
+  return [...latest.values()];
 }
 
 /** One message that the database cannot take must not hold up the others: halve until it stands alone, then keep it as refused. */
