@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { timestamp } from './common';
-import { CALL_NAMES, STAGES, VERDICTS, type Assessment, type Call, type Estimate, type Instant, type Judgement, type WideEstimate } from '../core/types';
+import { CALL_NAMES, NECKS, STAGES, VERDICTS, type Assessment, type Call, type Estimate, type Footing, type Instant, type Judgement, type WideEstimate } from '../core/types';
 
 const estimate = z.object({ value: z.number(), lo: z.number(), hi: z.number() });
 const instantEstimate = z.object({ value: z.string(), lo: z.string(), hi: z.string() });
@@ -38,10 +38,35 @@ export type AssessmentBody = z.infer<typeof assessmentSchema>;
 
 export const curvePointSchema = z.object({ at: z.string(), gravity: z.number(), lo: z.number(), hi: z.number() });
 
+/** What the forecast stands on, in the core's own words and units (`at` in ms since 1970, gravities in points): what is played with on the page. */
+export const footingSchema = z.object({
+  at: z.number(),
+  hour: z.number(),
+  from: z.number(),
+  effectiveOg: z.number(),
+  level: z.number(),
+  finalGravity: z.object({ value: z.number(), half80: z.number() }),
+  tau: z.number(),
+  warmth: z.number(),
+  temperatureC: z.number().nullable(),
+  done: z.number(),
+  hoursToEnd: z.number().nullable(),
+  ratePointsPerDay: z.number().nullable(),
+  state: z.enum(['falling', 'stuck', 'terminal']),
+  maxRate: z.number(),
+  peaked: z.boolean(),
+  neck: z.enum(NECKS).nullable(),
+  parameters: z.array(z.number()).readonly(),
+  prior: z.array(z.object({ mean: z.number(), sd: z.number() })).readonly(),
+  data: z.object({ hours: z.array(z.number()).readonly(), tau: z.array(z.number()).readonly(), points: z.array(z.number()).readonly(), sd: z.array(z.number()).readonly() }),
+}) satisfies z.ZodType<Footing>;
+
 const drawnSchema = assessmentSchema.extend({
   curve: z.array(curvePointSchema),
   expected: z.array(curvePointSchema),
   gas: z.array(z.object({ at: z.string(), value: z.number() })),
+  /** Null where nothing can be fitted yet. */
+  footing: footingSchema.nullable(),
 });
 /** The assessment with what a picture of it needs. */
 export type Drawn = z.infer<typeof drawnSchema>;
@@ -112,6 +137,7 @@ export function presentJudgement(judgement: Judgement): Drawn {
     curve: judgement.curve.map(point),
     expected: judgement.expected.map(point),
     gas: judgement.gas.map((item) => ({ at: iso(item.at), value: rounded(item.value, 4) })),
+    footing: judgement.footing,
   };
 }
 

@@ -1,4 +1,4 @@
-import type { Assessment, BatchSetup, CallName, Call, CurvePoint, Estimate, Instant, Judgement, Reading, Stage, WideEstimate } from './types';
+import type { Assessment, BatchSetup, CallName, Call, Estimate, Instant, Judgement, Reading, Stage, WideEstimate } from './types';
 import { bottleCall } from './calls/bottle';
 import { callsByHand, handRecord } from './calls/byhand';
 import { neckCall } from './calls/neck';
@@ -16,6 +16,7 @@ import { hoursToWithin } from './stages/byhand';
 import { Run } from './stages/run';
 import type { Watch } from './stages/watch';
 import { drawing } from './stages/drawing';
+import { footingOf } from './stages/footing';
 import { abvBalling, apparentAttenuation } from './strength/strength';
 import { sgOf } from './units/convert';
 
@@ -121,10 +122,8 @@ function judgementOf(watch: Watch, at: Instant, hour: number, picture: boolean):
     attenuationPercent: level === null || og <= 0 ? null : apparentAttenuation(sgOf(og), sgOf(level)),
     calls,
   };
-  const drawn: { curve: CurvePoint[]; expected: CurvePoint[]; gas: { at: Instant; value: number }[] } = picture
-    ? drawing(watch, at, hand ? hand.fit : null)
-    : { curve: [], expected: [], gas: [] };
-  return { assessment, ...drawn };
+  if (!picture) return { assessment, curve: [], expected: [], gas: [], footing: null };
+  return { assessment, ...drawing(watch, at, hand ? hand.fit : null), footing: footingOf({ watch, at, hour, level, rate, fit, byHand: hand !== null, finalGravity }) };
 }
 
 /** Expected final gravity with its intervals; their upper ends never lie more than 1.5 points above the present level. */
@@ -188,5 +187,6 @@ function unpitched(setup: BatchSetup, at: Instant, readings: readonly Reading[])
     curve: [],
     expected: [],
     gas: [],
+    footing: null,
   };
 }

@@ -142,6 +142,37 @@ export interface CurvePoint {
   hi: number;
 }
 
+/** What a forecast stands on, small enough to be carried to where it is played with: see ./what-if. Gravities in points. */
+export interface Footing {
+  at: Instant;
+  /** h since the pitch at `at`. */
+  hour: number;
+  /** Where the stretch begins that the curve follows (the pitch, or the last addition), h since the pitch. */
+  from: number;
+  /** Original gravity with all sugar added since. */
+  effectiveOg: number;
+  level: number;
+  /** Expected final gravity as it is judged, with the half width of its 80 % interval. */
+  finalGravity: { value: number; half80: number };
+  /** Thermal age of the stretch now, days at 20 °C, and how much of it a day brings at the present temperature. */
+  tau: number;
+  warmth: number;
+  temperatureC: number | null;
+  /** Share of the fall that is done. */
+  done: number;
+  hoursToEnd: number | null;
+  ratePointsPerDay: number | null;
+  state: 'falling' | 'stuck' | 'terminal';
+  /** Highest pace so far, points a day. */
+  maxRate: number;
+  peaked: boolean;
+  neck: Neck | null;
+  /** Parameters of the kinetic curve, its priors, and the readings (medians of stretches) that it was fitted to. */
+  parameters: readonly number[];
+  prior: readonly { mean: number; sd: number }[];
+  data: { hours: readonly number[]; tau: readonly number[]; points: readonly number[]; sd: readonly number[] };
+}
+
 /** What `assess` gives: the judgement, and what a picture of it needs. */
 export interface Judgement {
   assessment: Assessment;
@@ -151,4 +182,6 @@ export interface Judgement {
   expected: readonly CurvePoint[];
   /** Gas in L/h by bin, ascending, at most 240 points. */
   gas: readonly { at: Instant; value: number }[];
+  /** Null where nothing can be fitted. */
+  footing: Footing | null;
 }

@@ -8,6 +8,8 @@ export interface Observations {
   tau: Float64Array;
   g: Float64Array;
   sd: Float64Array;
+  /** h since the pitch: the same ages by the clock. */
+  hours: Float64Array;
 }
 
 /** The attenuation curve after the fit, with how well it is known. */
@@ -19,6 +21,9 @@ export interface CurveFit {
   /** Standard deviation of the final gravity, points, before calibration of its interval. */
   fgSd: number;
   converged: boolean;
+  /** What it was fitted to, so that it can be fitted otherwise. */
+  data: Observations;
+  prior: CurvePrior;
 }
 
 const LOWER = [-20, -40, -5, -5, -6, -6];
@@ -84,6 +89,8 @@ export function fitCurve(data: Observations, prior: CurvePrior, start?: ArrayLik
     curve: new KineticCurve(fit.parameters),
     fgSd: Math.sqrt(Math.max(0, variance)),
     converged: fit.converged,
+    data: { n: data.n, tau: data.tau.slice(0, data.n), g: data.g.slice(0, data.n), sd: data.sd.slice(0, data.n), hours: data.hours.slice(0, data.n) },
+    prior,
   };
 }
 

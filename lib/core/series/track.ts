@@ -7,7 +7,7 @@ import { medianInPlace, select } from './order';
 export const HOUR_MS = 3_600_000;
 const USUAL_C = 20;
 /** Rate of fermentation at a temperature against that at 20 °C: Q10 of 2.2, our own choice (Q10 2 is common practice). */
-const warmth = (celsius: number): number => 2.2 ** ((Math.min(34, Math.max(4, celsius)) - 20) / 10);
+export const warmth = (celsius: number): number => 2.2 ** ((Math.min(34, Math.max(4, celsius)) - 20) / 10);
 
 /** A stretch of the batch that follows one curve: from the pitch, or from the last addition. */
 export interface Segment {

@@ -117,6 +117,7 @@ function fitHand(watch: Watch, readings: readonly HandReading[]): CurveFit | nul
   const tau = new Float64Array(n);
   const g = new Float64Array(n);
   const sd = new Float64Array(n);
+  const hours = Float64Array.from(readings, (one) => one.hour);
   const tau0 = watch.track.tauAt(segment.from);
   readings.forEach((one, i) => {
     const next = readings[Math.min(n - 1, i + 1)]!;
@@ -128,7 +129,7 @@ function fitHand(watch: Watch, readings: readonly HandReading[]): CurveFit | nul
     sd[i] = Math.hypot(one.sd, 0.3 * rate, 0.4);
   });
   const og = { mean: segment.level ?? segment.effectiveOg, sd: segment.restarted ? 2 : watch.ogSd };
-  return fitCurve({ n, tau, g, sd }, curvePrior(setup.kind, og, watch.fgPrior(), segment.restarted));
+  return fitCurve({ n, tau, g, sd, hours }, curvePrior(setup.kind, og, watch.fgPrior(), segment.restarted));
 }
 
 /** Hours from `hour` until the fitted curve is within `points` of its end. */

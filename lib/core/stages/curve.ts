@@ -74,6 +74,6 @@ export function fitSegment(
     const u = Math.min(1, Math.max(0, (g[c]! - fgPrior.mean) / drop));
     sd[c] = Math.sqrt((0.6 + 10 * u) ** 2 + (0.3 * rate) ** 2 + 0.81 / counts[c]!);
   }
-  return fitCurve({ n, tau, g, sd }, curvePrior(setup.kind, og, fgPrior, segment.restarted), start);
+  return fitCurve({ n, tau, g, sd, hours }, curvePrior(setup.kind, og, fgPrior, segment.restarted), start);
 }
 

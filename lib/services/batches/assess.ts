@@ -62,10 +62,10 @@ export function assessBatch(batchId: string, { clock = systemClock, silenceCount
 }
 
 /** Keeps the judgement for the screens, and for later where a verdict changed; says so where anything did. */
-async function keep(batch: Batch, { curve, expected, gas, ...assessment }: Drawn, mark: string, at: Date, transaction: Transaction): Promise<void> {
+async function keep(batch: Batch, { curve, expected, gas, footing, ...assessment }: Drawn, mark: string, at: Date, transaction: Transaction): Promise<void> {
   const { id: batchId, cellarId } = batch;
   const before = (await batchState<AssessmentBody>(batchId, transaction))?.assessment ?? null;
-  await saveBatchState({ batchId, cellarId, at, mark, assessment, curve: thinned(curve), expected: thinned(expected), drawing: { curve, expected, gas } }, transaction);
+  await saveBatchState({ batchId, cellarId, at, mark, assessment, curve: thinned(curve), expected: thinned(expected), drawing: { curve, expected, gas, footing } }, transaction);
   const changed = changedCalls(before, assessment);
   if (changed.length) await keepAssessment({ cellarId, batchId, at, changed, assessment }, transaction);
   const same = before !== null && isDeepStrictEqual({ ...before, at: null }, { ...assessment, at: null });

@@ -12,7 +12,8 @@ import { InvalidError, NotFoundError } from '@/lib/errors';
 import { setupOf } from './setup';
 
 type Query = z.infer<typeof assessmentQuery>;
-type Drawing = Pick<Drawn, 'curve' | 'expected' | 'gas'>;
+/** What was kept before there was a footing has none until the next judgement. */
+type Drawing = Pick<Drawn, 'curve' | 'expected' | 'gas'> & Partial<Pick<Drawn, 'footing'>>;
 type Kept = KeptJudgement<AssessmentBody, Drawing>;
 
 /** Judgements kept in memory: several people look at the same past, and a fit costs more than a query. */
@@ -73,13 +74,13 @@ export async function getJudgement(actor: Actor, batchId: string, query: Query, 
   const found = await keptJudgement<AssessmentBody, Drawing>(actor.cellarId, batchId);
   if (!found) throw new NotFoundError('batch');
   const state = stateOf(found, now);
-  if (state !== 'out of date') return { ...found.kept!.assessment, ...found.kept!.drawing!, pending: state === 'pending' };
+  if (state !== 'out of date') return { footing: null, ...found.kept!.assessment, ...found.kept!.drawing!, pending: state === 'pending' };
   const minute = Math.floor(now / 60_000);
   return { ...(await recall(`${batchId} ${found.mark} now ${minute}`, () => judge(batchId, null, now))), pending: false };
 }
 
 /** The same without what a picture needs. */
 export async function getAssessment(actor: Actor, batchId: string, query: Query, clock: Clock = systemClock): Promise<AssessmentBody> {
-  const { curve: _curve, expected: _expected, gas: _gas, pending: _pending, ...assessment } = await getJudgement(actor, batchId, query, clock);
+  const { curve: _curve, expected: _expected, gas: _gas, footing: _footing, pending: _pending, ...assessment } = await getJudgement(actor, batchId, query, clock);
   return assessment;
 }
