@@ -1,6 +1,7 @@
 import { nextDue } from '@/db/queries/outbox';
 import { systemClock } from '@/lib/clock';
 import { logFor } from '@/lib/log';
+import { sendLetters } from '@/lib/services/letters/send';
 import { sendDue, type SendDeps } from '@/lib/services/outbox/send';
 import { startLoop, type Loop } from './loop';
 
@@ -28,7 +29,11 @@ export function startSending(deps: Omit<SendDeps, 'clock' | 'stopping'>): Sendin
     async () => {
       const now = systemClock.now();
       if (now < pausedUntil) return pausedUntil - now;
-      const { mails, unavailable } = await sendDue({ ...deps, stopping: () => stopping });
+      // Somebody waits for a letter before the screen.
+      const letters = await sendLetters({ ...deps, stopping: () => stopping });
+      const due = letters.unavailable ? letters : await sendDue({ ...deps, stopping: () => stopping });
+      const mails = letters.mails + due.mails;
+      const { unavailable } = due;
       figures.mails += mails;
       if (unavailable) {
         pausedUntil = systemClock.now() + pause * (0.75 + 0.5 * Math.random());

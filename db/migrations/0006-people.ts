@@ -1,6 +1,6 @@
 import type { Migration } from './types';
 
-/** Invitations, one-time links, second factor, API tokens, a person's units, and from where the audit trail's lines came. */
+/** Invitations, one-time links, letters, second factor, API tokens, a person's units, and from where the audit trail's lines came. */
 export const up: Migration['up'] = async (run) => {
   await run(`
     alter table people
@@ -72,8 +72,26 @@ export const up: Migration['up'] = async (run) => {
     )`);
   await run(`create index api_tokens_person on api_tokens (person_id, cellar_id)`);
 
-  // A mail to an address that belongs to no account, or not yet.
-  await run(`alter table outbox add column to_email text, add column to_name text`);
+  // Mails about an account or an invitation, each to one address that may belong to nobody yet, sent alone and at once.
+  await run(`
+    create table letters (
+      id bigint generated always as identity primary key,
+      cellar_id uuid references cellars on delete cascade,
+      person_id uuid references people on delete cascade,
+      to_email text not null,
+      to_name text not null,
+      dedupe_key text not null unique,
+      payload jsonb not null,
+      created_at timestamptz not null default now(),
+      next_attempt_at timestamptz not null default now(),
+      leased_until timestamptz,
+      attempts integer not null default 0,
+      refusals integer not null default 0,
+      sent_at timestamptz,
+      failed_at timestamptz,
+      last_error text
+    )`);
+  await run(`create index letters_due on letters (next_attempt_at) where sent_at is null and failed_at is null`);
 
   await run(`alter table audit add column address text, add column means text`);
   await run(`create index audit_person on audit (person_id, at desc)`);
@@ -82,8 +100,7 @@ export const up: Migration['up'] = async (run) => {
 export const down: Migration['down'] = async (run) => {
   await run(`drop index if exists audit_person`);
   await run(`alter table audit drop column if exists address, drop column if exists means`);
-  await run(`alter table outbox drop column if exists to_email, drop column if exists to_name`);
-  await run(`drop table if exists api_tokens, invitations, account_links, recovery_codes`);
+  await run(`drop table if exists letters, api_tokens, invitations, account_links, recovery_codes`);
   await run(`alter table sign_ins drop column if exists idle_s`);
   await run(`
     alter table people

@@ -5,8 +5,6 @@ export class OutboxMail extends Model<InferAttributes<OutboxMail>, InferCreation
   declare cellarId: CreationOptional<string | null>;
   declare alertId: CreationOptional<string | null>;
   declare personId: CreationOptional<string | null>;
-  declare toEmail: CreationOptional<string | null>;
-  declare toName: CreationOptional<string | null>;
   declare means: CreationOptional<'mail'>;
   declare dedupeKey: string;
   declare payload: Record<string, unknown>;
@@ -26,8 +24,6 @@ export class OutboxMail extends Model<InferAttributes<OutboxMail>, InferCreation
         cellarId: DataTypes.UUID,
         alertId: DataTypes.UUID,
         personId: DataTypes.UUID,
-        toEmail: DataTypes.TEXT,
-        toName: DataTypes.TEXT,
         means: DataTypes.TEXT,
         dedupeKey: DataTypes.TEXT,
         payload: DataTypes.JSONB,

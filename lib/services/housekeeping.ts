@@ -1,3 +1,4 @@
+import { forgetOldLetters } from '@/db/queries/letters';
 import { forgetOldMails } from '@/db/queries/outbox';
 import { forgetOldTries } from '@/db/queries/sign-in-tries';
 import { forgetOldBeats } from './heartbeat';
@@ -5,11 +6,14 @@ import { purgeRefusals } from './readings/purge';
 
 /** Mails that went or were given up stay this long on their alert. */
 const MAILS_KEPT_DAYS = 365;
+/** Letters, spent links and invitations that came to nothing. */
+const LETTERS_KEPT_DAYS = 30;
 
 /** Drops what has been kept for as long as was promised. Safe to run twice, and by two workers at once. */
 export async function dropWhatIsOld(): Promise<void> {
   await purgeRefusals();
   await forgetOldMails(MAILS_KEPT_DAYS);
+  await forgetOldLetters(LETTERS_KEPT_DAYS);
   await forgetOldTries();
   await forgetOldBeats();
 }

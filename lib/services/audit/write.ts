@@ -1,6 +1,7 @@
 import type { Transaction } from 'sequelize';
 import { AuditRow } from '@/db/models';
 import type { Actor } from '@/lib/auth/policies';
+import { currentOrigin } from '@/lib/origin';
 
 interface AuditLine {
   /** What was done, `noun.verb`. */
@@ -13,9 +14,10 @@ interface AuditLine {
   detail?: Record<string, unknown>;
 }
 
-/** Writes down who did what, in the transaction that did it. */
+/** Writes down who did what, and from where, in the transaction that did it. */
 export async function audit(line: AuditLine, transaction?: Transaction): Promise<void> {
-  await AuditRow.create({ ...line, detail: line.detail ?? {} }, { transaction });
+  const origin = currentOrigin();
+  await AuditRow.create({ ...line, detail: line.detail ?? {}, address: origin?.address ?? null, means: origin?.means ?? null }, { transaction });
 }
 
 export const auditBy = (actor: Actor, action: string, subject: string, detail: Record<string, unknown>, transaction: Transaction) =>

@@ -1,0 +1,65 @@
+import { QueryTypes, type Transaction } from 'sequelize';
+import { database } from '../client';
+
+export interface OwedLetter {
+  /** The letter goes with it when it is deleted. */
+  cellarId: string | null;
+  personId: string | null;
+  to: { email: string; name: string };
+  /** Names what is owed: the same is never owed twice. */
+  dedupeKey: string;
+  payload: unknown;
+}
+
+/** Owes a letter, in the transaction that has the reason for it. */
+export async function oweLetter({ cellarId, personId, to, dedupeKey, payload }: OwedLetter, transaction: Transaction): Promise<void> {
+  await database().query(
+    `insert into letters (cellar_id, person_id, to_email, to_name, dedupe_key, payload) values ($cellarId, $personId, $email, $name, $dedupeKey, $payload)
+     on conflict (dedupe_key) do nothing`,
+    { bind: { cellarId, personId, email: to.email, name: to.name, dedupeKey, payload: JSON.stringify(payload) }, transaction },
+  );
+}
+
+export interface ClaimedLetter {
+  id: number;
+  dedupeKey: string;
+  email: string;
+  name: string;
+  payload: unknown;
+  attempts: number;
+  refusals: number;
+  createdAt: Date;
+}
+
+/** Takes the letter that is due first; nobody else takes it until the lease ends. */
+export async function claimLetter(now: Date, leaseUntil: Date): Promise<ClaimedLetter | null> {
+  const [row] = await database().query<ClaimedLetter>(
+    `update letters set leased_until = $leaseUntil, attempts = attempts + 1
+     where id = (
+       select id from letters
+       where sent_at is null and failed_at is null and next_attempt_at <= $now and (leased_until is null or leased_until <= $now)
+       order by next_attempt_at, id limit 1 for update skip locked
+     )
+     returning id, dedupe_key as "dedupeKey", to_email as email, to_name as name, payload, attempts, refusals, created_at as "createdAt"`,
+    { bind: { now, leaseUntil }, type: QueryTypes.SELECT },
+  );
+  return row ?? null;
+}
+
+/** What became of a try: it went, it failed for good, or it waits. */
+export type LetterOutcome = { sentAt: Date } | { failedAt: Date; error: string } | { nextAt: Date; refusals: number; error: string };
+
+export async function markLetter(id: number, outcome: LetterOutcome): Promise<void> {
+  const { sentAt = null, failedAt = null, nextAt = null, refusals = null, error = null } = outcome as { sentAt?: Date; failedAt?: Date; nextAt?: Date; refusals?: number; error?: string };
+  await database().query(
+    `update letters set sent_at = $sentAt, failed_at = $failedAt, next_attempt_at = coalesce($nextAt, next_attempt_at), refusals = coalesce($refusals, refusals), last_error = $error, leased_until = null where id = $id`,
+    { bind: { id, sentAt, failedAt, nextAt, refusals, error } },
+  );
+}
+
+/** Drops letters that went or failed, links that can no longer be used, and invitations that came to nothing: after that nobody's address is kept that has no account. */
+export async function forgetOldLetters(days: number): Promise<void> {
+  await database().query(`delete from letters where coalesce(sent_at, failed_at) < now() - make_interval(days => $days)`, { bind: { days } });
+  await database().query(`delete from account_links where expires_at < now() - make_interval(days => $days)`, { bind: { days } });
+  await database().query(`delete from invitations where accepted_at is null and least(expires_at, coalesce(revoked_at, expires_at)) < now() - make_interval(days => $days)`, { bind: { days } });
+}
