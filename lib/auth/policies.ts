@@ -18,8 +18,10 @@ export const ACTIONS = {
   'alerts.read': { roles: ['keeper', 'brewer', 'hand'], says: 'see alerts' },
   'alerts.acknowledge': { roles: ['keeper', 'brewer', 'hand'], says: 'take an alert in hand' },
   'alerts.resolve': { roles: ['keeper', 'brewer', 'hand'], says: 'clear an alert' },
+  'alerts.mute': { roles: ['keeper', 'brewer', 'hand'], says: 'mute a vessel' },
   'sensors.read': { roles: ['keeper', 'brewer', 'hand'], says: 'see sensors' },
   'sensors.assign': { roles: ['keeper', 'brewer'], says: 'put a sensor in a batch' },
+  'sensors.calibrate': { roles: ['keeper', 'brewer'], says: 'calibrate a sensor' },
   'sensors.manage': { roles: ['keeper'], says: 'make sensors and their credentials' },
   'musts.read': { roles: ['keeper', 'brewer', 'hand', 'guest'], says: 'see must sheets and the catalogue' },
   'musts.write': { roles: ['keeper', 'brewer'], says: 'write must sheets' },
@@ -40,6 +42,7 @@ export const ACTIONS = {
   'members.read': { roles: ['keeper', 'brewer', 'hand', 'guest'], says: 'see who shares the cellar' },
   'members.manage': { roles: ['keeper'], says: 'invite, change and remove people' },
   'cellar.manage': { roles: ['keeper'], says: 'change the cellar’s settings' },
+  'audit.read': { roles: ['keeper'], says: 'read the trail of who did what' },
 } as const satisfies Record<Action, { roles: readonly Role[]; says: string }>;
 
 /** Who acts, and in which cellar. */

@@ -83,7 +83,7 @@ export class SensorDirectory {
 
 async function load(identifier: string): Promise<Known | null> {
   database();
-  const row = await Sensor.findOne({ where: { identifier }, raw: true });
+  const row = await Sensor.findOne({ where: { identifier, removedAt: null, kind: { [Op.ne]: 'file' } }, raw: true });
   return row && { identity: { id: row.id, cellarId: row.cellarId, identifier: row.identifier }, secretHash: row.secretHash, disabled: row.disabledAt !== null };
 }
 
@@ -91,7 +91,7 @@ async function load(identifier: string): Promise<Known | null> {
 export async function revokedSensors(signedIn: ReadonlyMap<number, Buffer>): Promise<number[]> {
   if (signedIn.size === 0) return [];
   database();
-  const rows = await Sensor.findAll({ attributes: ['id', 'secretHash'], where: { id: { [Op.in]: [...signedIn.keys()] }, disabledAt: null }, raw: true });
+  const rows = await Sensor.findAll({ attributes: ['id', 'secretHash'], where: { id: { [Op.in]: [...signedIn.keys()] }, disabledAt: null, removedAt: null }, raw: true });
   const valid = new Map(rows.map((row) => [row.id, row.secretHash]));
   return [...signedIn].filter(([id, hash]) => !valid.get(id)?.equals(hash)).map(([id]) => id);
 }

@@ -6,6 +6,9 @@ import { id, pageQuery } from './common';
 import { byId, endpoint, type Endpoint } from './endpoint';
 import { endpointsAfter } from './endpoints-after';
 import { endpointsBefore } from './endpoints-before';
+import { endpointsPeople } from './endpoints-people';
+import { endpointsSensors } from './endpoints-sensors';
+import { endpointsMessages } from './endpoints-messages';
 import { chooseCellar, meSchema, memberList, signInList } from './people';
 import { createdSensorSchema, createSensor, refusedList, sensorList, sensorSchema, updateSensor } from './sensors';
 import { reading, telemetryResult } from './telemetry';
@@ -49,6 +52,9 @@ export const endpoints = {
 
   ...endpointsBefore,
   ...endpointsAfter,
+  ...endpointsPeople,
+  ...endpointsSensors,
+  ...endpointsMessages,
 
   streamEvents: endpoint({ method: 'GET', path: '/events', summary: 'Server-sent events: `change` says what to ask for again, `beat` that the line is up', access: 'batches.read', response: null, status: 200 }),
   postTelemetry: endpoint({ method: 'POST', path: '/telemetry', summary: 'Readings of a sensor, as over MQTT; also SenML JSON (RFC 8428)', access: 'sensor', body: z.union([reading, z.array(reading).max(500)]), response: telemetryResult, status: 202 }),

@@ -10,8 +10,10 @@ export const ACTION_NAMES = [
   'alerts.read',
   'alerts.acknowledge',
   'alerts.resolve',
+  'alerts.mute',
   'sensors.read',
   'sensors.assign',
+  'sensors.calibrate',
   'sensors.manage',
   'musts.read',
   'musts.write',
@@ -32,5 +34,6 @@ export const ACTION_NAMES = [
   'members.read',
   'members.manage',
   'cellar.manage',
+  'audit.read',
 ] as const;
 export type Action = (typeof ACTION_NAMES)[number];

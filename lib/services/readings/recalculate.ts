@@ -28,20 +28,20 @@ export async function recalculate(sensorId: number, from: Date): Promise<number>
   if (!notes) return 0;
   let next: string | Date = from;
   let changed = 0;
-  let span: { first: number; last: number } | null = null;
+  const turnedAt: string[] = [];
   for (;;) {
     const readings: StoredReading[] = await readingsFrom(sensorId, next, AT_ONCE);
     const due = readings.flatMap((reading) => turned(reading, notes.calibrations) ?? []);
     if (due.length > 0) {
       await turnReadings(sensorId, due);
       changed += due.length;
-      span = { first: span?.first ?? Date.parse(due[0]!.at), last: Date.parse(due.at(-1)!.at) };
+      turnedAt.push(due[0]!.at, due.at(-1)!.at);
     }
     const last = readings.at(-1);
     if (readings.length < AT_ONCE || !last) break;
     next = last.at;
   }
-  if (span) await tellOfReadings(database(), [{ sensorId, ...span }]);
+  if (changed > 0) await tellOfReadings(database(), [{ sensorId, first: Date.parse(turnedAt[0]!), last: Date.parse(turnedAt.at(-1)!) }]);
   return changed;
 }
 

@@ -1,35 +1,53 @@
 import { Op, type Transaction } from 'sequelize';
-import { Assignment, Sensor } from '@/db/models';
+import { Assignment, ProbeAssignment, Sensor } from '@/db/models';
 import { ConflictError, NotFoundError } from '@/lib/errors';
 
-/** @throws NotFoundError for another cellar's sensor as for none at all. */
+/** @throws NotFoundError for another cellar's sensor as for none at all, and for one that was removed. */
 export async function loadSensor(cellarId: string, identifier: string, transaction?: Transaction): Promise<Sensor> {
-  const sensor = await Sensor.findOne({ where: { cellarId, identifier }, transaction, ...(transaction && { lock: transaction.LOCK.UPDATE }) });
+  const sensor = await Sensor.findOne({ where: { cellarId, identifier, removedAt: null, kind: { [Op.ne]: 'file' } }, transaction, ...(transaction && { lock: transaction.LOCK.UPDATE }) });
   if (!sensor) throw new NotFoundError('sensor');
   return sensor;
 }
 
-/** Ends where the sensor is; an assignment that would have no length goes. */
-export async function takeOut(where: { sensorId?: number; batchId?: string }, at: Date, transaction: Transaction): Promise<string[]> {
-  const open = await Assignment.findAll({ where: { ...where, toAt: { [Op.is]: null } }, transaction, lock: transaction.LOCK.UPDATE });
-  for (const assignment of open) {
-    if (assignment.fromAt >= at) await assignment.destroy({ transaction });
-    else await assignment.update({ toAt: at }, { transaction });
+type Stay = Assignment | ProbeAssignment;
+
+async function end(open: Stay[], at: Date, transaction: Transaction): Promise<string[]> {
+  for (const stay of open) {
+    // One that would have no length goes.
+    if (stay.fromAt >= at) await stay.destroy({ transaction });
+    else await stay.update({ toAt: at }, { transaction });
   }
-  return open.map((assignment) => assignment.batchId);
+  return open.map((stay) => stay.batchId);
+}
+
+const openStays = (where: { sensorId?: number; batchId?: string }, transaction: Transaction) => ({ where: { ...where, toAt: { [Op.is]: null } }, transaction, lock: transaction.LOCK.UPDATE });
+
+/** Ends where the sensor is, or what is in the batch: floats and probes. */
+export async function takeOut(where: { sensorId?: number; batchId?: string }, at: Date, transaction: Transaction): Promise<string[]> {
+  const floats = await Assignment.findAll(openStays(where, transaction));
+  const probes = await ProbeAssignment.findAll(openStays(where, transaction));
+  return [...(await end(floats, at, transaction)), ...(await end(probes, at, transaction))];
 }
 
 /**
  * Puts a sensor into a batch from `at` on: it leaves the batch it was in, and the
- * sensor that was in this one leaves it, since a batch follows one sensor.
+ * float that was in this one leaves it, since a batch follows one float. Probes
+ * stand beside it, as many as there are.
  * @returns the batches that lost or gained a sensor.
  */
 export async function placeSensor(sensor: Sensor, batchId: string, at: Date, transaction: Transaction): Promise<string[]> {
   if (sensor.disabledAt) throw new ConflictError('This sensor is switched off. Switch it on first.');
   const left = await takeOut({ sensorId: sensor.id }, at, transaction);
-  await takeOut({ batchId }, at, transaction);
+  const stay = { cellarId: sensor.cellarId, sensorId: sensor.id, batchId };
+  const after = { where: { sensorId: sensor.id, toAt: { [Op.gt]: at } }, order: [['toAt', 'DESC']] as [string, string][], transaction };
   // It may have been elsewhere after `at` and have come out since: what it measured then stays there.
-  const last = await Assignment.findOne({ where: { sensorId: sensor.id, toAt: { [Op.gt]: at } }, order: [['toAt', 'DESC']], transaction });
-  await Assignment.create({ cellarId: sensor.cellarId, sensorId: sensor.id, batchId, fromAt: last?.toAt ?? at }, { transaction });
+  if (sensor.kind === 'room' || sensor.kind === 'foam') {
+    const last = await ProbeAssignment.findOne(after);
+    await ProbeAssignment.create({ ...stay, fromAt: last?.toAt ?? at }, { transaction });
+  } else {
+    await end(await Assignment.findAll(openStays({ batchId }, transaction)), at, transaction);
+    const last = await Assignment.findOne(after);
+    await Assignment.create({ ...stay, fromAt: last?.toAt ?? at }, { transaction });
+  }
   return [...new Set([...left, batchId])];
 }

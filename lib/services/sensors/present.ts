@@ -8,7 +8,7 @@ export function presentSensor(row: SensorRow): SensorBody {
   return {
     id: row.identifier,
     name: row.name,
-    kind: row.kind,
+    kind: row.kind === 'file' ? 'float' : row.kind,
     interval_s: row.intervalS,
     disabled: row.disabledAt !== null,
     created_at: iso(row.createdAt),
@@ -22,5 +22,10 @@ export function presentSensor(row: SensorRow): SensorBody {
       signal: row.last.signal,
     },
     refused_24h: row.refused24h,
+    settings:
+      row.settingsAt && row.wantedIntervalS !== null
+        ? { version: row.settingsVersion, interval_s: row.wantedIntervalS, sent_at: iso(row.settingsAt), confirmed_at: row.confirmedAt && row.confirmedVersion === row.settingsVersion ? iso(row.confirmedAt) : null }
+        : null,
+    calibration: row.calibration && { version: row.calibration.version, applies_from: iso(row.calibration.appliesFrom) },
   };
 }

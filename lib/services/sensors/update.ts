@@ -3,7 +3,7 @@ import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
 import type { SensorBody, UpdateSensor } from '@/lib/contracts/sensors';
-import { ConflictError } from '@/lib/errors';
+import { ConflictError, InvalidError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { loadBatch } from '../batches/load';
 import { notifyChange } from '../changes';
@@ -15,6 +15,8 @@ export async function updateSensor(actor: Actor, identifier: string, input: Upda
   authorize(actor, 'sensors.assign');
   if (input.name !== undefined || input.interval_s !== undefined || input.disabled !== undefined) authorize(actor, 'sensors.manage');
   const now = new Date(clock.now());
+  const since = input.since === undefined ? now : new Date(input.since);
+  if (since > now) throw new InvalidError('The time lies ahead.', { since: ['lies ahead'] });
   return inTransaction(async (transaction) => {
     const sensor = await loadSensor(actor.cellarId, identifier, transaction);
     if (input.name !== undefined) sensor.set('name', input.name);
@@ -24,11 +26,11 @@ export async function updateSensor(actor: Actor, identifier: string, input: Upda
 
     const touched = new Set<string | null>([null]);
     if (input.batch_id === null) {
-      for (const id of await takeOut({ sensorId: sensor.id }, now, transaction)) touched.add(id);
+      for (const id of await takeOut({ sensorId: sensor.id }, since, transaction)) touched.add(id);
     } else if (input.batch_id !== undefined) {
       const batch = await loadBatch(actor.cellarId, input.batch_id, transaction);
       if (batch.state === 'ended') throw new ConflictError('This batch has ended. Open it again first.');
-      for (const id of await placeSensor(sensor, batch.id, now, transaction)) touched.add(id);
+      for (const id of await placeSensor(sensor, batch.id, since, transaction)) touched.add(id);
     }
     await auditBy(actor, 'sensor.updated', identifier, { ...input }, transaction);
     for (const batch of touched) await notifyChange({ cellar: actor.cellarId, kind: 'sensor', batch }, transaction);
