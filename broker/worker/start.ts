@@ -1,6 +1,9 @@
 import { smtpTransport } from '@/lib/services/outbox/transport';
+import { furtherMeans } from '@/lib/services/outbox/ways';
+import { systemClock } from '@/lib/clock';
 import { env } from '@/lib/config/env';
 import { logFor } from '@/lib/log';
+import { oweDigests } from '@/lib/services/digest/owe';
 import { dropWhatIsOld } from '@/lib/services/housekeeping';
 import { startHeartbeat } from '../heartbeat';
 import { keepPartitionsAhead } from '../keep-partitions';
@@ -10,6 +13,8 @@ import { startSending } from './sending';
 
 const log = logFor('worker');
 const HOUSEKEEPING_MS = 3_600_000;
+/** A digest comes at most this long after its hour. */
+const DIGEST_MS = 30_000;
 
 export interface WorkerOptions {
   /** A batch is judged at most this often after new readings, ms. */
@@ -35,6 +40,7 @@ export function startWorker({ spacingMs, tickMs, idleMs, sendTimeoutMs }: Worker
     transport: smtpTransport({ url: SMTP_URL, from: MAIL_FROM, sendTimeoutMs, connectTimeoutMs: Math.min(10_000, sendTimeoutMs) }),
     publicUrl: PUBLIC_URL,
     messageHost: domainOf(MAIL_FROM),
+    means: furtherMeans(() => systemClock.now()),
     leaseMs: sendTimeoutMs * 1.5,
   });
   const assessing = startAssessing({ spacingMs, tickMs, idleMs, onJudged: () => sending.wake() });
@@ -44,10 +50,19 @@ export function startWorker({ spacingMs, tickMs, idleMs, sendTimeoutMs }: Worker
   const tidy = () => void dropWhatIsOld().catch((error: unknown) => log.warn({ err: error }, 'old rows could not be dropped; tried again in an hour'));
   tidy();
   const tidying = setInterval(tidy, HOUSEKEEPING_MS);
+  const digesting = setInterval(
+    () =>
+      void oweDigests().then(
+        (owed) => owed > 0 && sending.wake(),
+        (error: unknown) => log.warn({ err: error }, 'the morning digests could not be written; tried again soon'),
+      ),
+    DIGEST_MS,
+  );
 
   return {
     stop: async () => {
       clearInterval(tidying);
+      clearInterval(digesting);
       stopPartitions();
       await Promise.all([assessing.stop(), recalculating.stop(), sending.stop()]);
       stopHeartbeat();

@@ -37,11 +37,11 @@ function Part({ name, children }: { name: string; children: React.ReactNode }) {
 }
 
 /** Open, waiting or failed, beside the word that says so. */
-function ToldMark({ state }: { state: 'sent' | 'waiting' | 'failed' }) {
+function ToldMark({ state }: { state: AlertBody['told'][number]['state'] }) {
   return (
     <svg viewBox="0 0 12 12" width="11" height="11" aria-hidden className="shrink-0 text-ink">
-      <rect x="1" y="1" width="10" height="10" stroke="currentColor" strokeWidth="1.5" fill={state === 'sent' ? 'currentColor' : 'none'} strokeDasharray={state === 'waiting' ? '2 1.5' : undefined} />
-      {state === 'failed' && <path d="M1 1 11 11" stroke="currentColor" strokeWidth="1.5" />}
+      <rect x="1" y="1" width="10" height="10" stroke="currentColor" strokeWidth="1.5" fill={state === 'sent' ? 'currentColor' : 'none'} strokeDasharray={state === 'waiting' || state === 'held' ? '2 1.5' : undefined} />
+      {(state === 'failed' || state === 'dropped') && <path d={state === 'failed' ? 'M1 1 11 11' : 'M3 6h6'} stroke="currentColor" strokeWidth="1.5" />}
     </svg>
   );
 }

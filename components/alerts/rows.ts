@@ -63,18 +63,35 @@ export function alertFate(alert: AlertBody, now: number, timeZone: string): { te
 export interface ToldLine {
   time: string;
   text: string;
-  state: 'sent' | 'waiting' | 'failed';
+  state: AlertBody['told'][number]['state'];
 }
 
-/** Who was told by mail, and whether it went; in time's order, what waits last. */
+type Told = AlertBody['told'][number];
+
+const HELD_WORDS: Record<NonNullable<Told['held_by']>, string> = { quiet: 'quiet hours', mute: 'muted', turn: 'if nobody answers' };
+
+function toldLine(one: Told, now: number, timeZone: string): ToldLine {
+  const time = one.at ? when(seconds(one.at), now, timeZone) : '';
+  const device = one.means === 'push' ? ' on the device' : '';
+  switch (one.state) {
+    case 'sent':
+      return { time, text: `told ${one.person}${device} ${time}`.trim(), state: 'sent' };
+    case 'failed':
+      return { time, text: one.means === 'push' ? `device of ${one.person} not reached` : `mail to ${one.person} failed`, state: 'failed' };
+    case 'held':
+      return { time, text: `${one.person}${device} from ${one.due ? when(seconds(one.due), now, timeZone) : 'later'}: ${one.held_by ? HELD_WORDS[one.held_by] : 'waits'}`, state: 'held' };
+    case 'dropped':
+      return { time, text: `${one.person}${device} not told: ${one.error ?? 'no need any more'}`, state: 'dropped' };
+    case 'waiting':
+      return { time, text: `telling ${one.person}${device}`, state: 'waiting' };
+  }
+}
+
+/** Who was told, by mail unless it says otherwise, and whether it went; in time's order; then who is being told, who waits, who need not be told any more. */
 export function toldLines(alert: Pick<AlertBody, 'told'>, now: number, timeZone: string): ToldLine[] {
-  const order = [...alert.told].sort((a, b) => (a.at ? seconds(a.at) : Infinity) - (b.at ? seconds(b.at) : Infinity));
-  return order.map((one) => {
-    const time = one.at ? when(seconds(one.at), now, timeZone) : '';
-    if (one.state === 'sent') return { time, text: `told ${one.person} ${time}`.trim(), state: 'sent' };
-    if (one.state === 'failed') return { time, text: `mail to ${one.person} failed`, state: 'failed' };
-    return { time, text: `telling ${one.person}`, state: 'waiting' };
-  });
+  const rank = ({ state }: Told) => (state === 'held' ? 2 : state === 'dropped' ? 3 : state === 'waiting' ? 1 : 0);
+  const time = ({ at, due }: Told) => seconds(at ?? due ?? '2100-01-01T00:00:00Z');
+  return [...alert.told].sort((a, b) => rank(a) - rank(b) || time(a) - time(b)).map((one) => toldLine(one, now, timeZone));
 }
 
 export interface LookAgain {

@@ -1,4 +1,5 @@
 import { QueryTypes, type Transaction } from 'sequelize';
+import type { HeldBy, MeansName } from '../../lib/core/alerts/telling';
 import type { Alert, Batch } from '../models';
 import { database } from '../client';
 
@@ -8,7 +9,9 @@ export interface AlertRow extends Pick<Alert, 'id' | 'call' | 'kind' | 'level' |
   batch: Pick<Batch, 'id' | 'name' | 'tag' | 'vesselKind' | 'drinkColour' | 'neck' | 'volumeL' | 'vesselL'>;
   acknowledgedBy: { id: string; name: string } | null;
   resolvedBy: { id: string; name: string } | null;
-  told: Array<{ person: string; at: string | null; state: 'waiting' | 'sent' | 'failed'; error: string | null }>;
+  told: Array<{ person: string; means: MeansName; at: string | null; state: 'waiting' | 'held' | 'sent' | 'failed' | 'dropped'; heldBy: HeldBy | 'turn' | null; due: string; error: string | null }>;
+  /** The vessel is muted until then. */
+  mutedUntil: Date | null;
 }
 
 interface Filter {
@@ -29,8 +32,11 @@ export function findAlerts({ cellarId, id, state, batchId, after, limit }: Filte
        case when taker.id is not null then json_build_object('id', taker.id, 'name', taker.name) end as "acknowledgedBy",
        case when clearer.id is not null then json_build_object('id', clearer.id, 'name', clearer.name) end as "resolvedBy",
        coalesce((
-         select json_agg(json_build_object('person', p.name, 'at', o.sent_at, 'state', case when o.sent_at is not null then 'sent' when o.failed_at is not null then 'failed' else 'waiting' end, 'error', o.last_error) order by o.id)
-         from outbox o join people p on p.id = o.person_id where o.alert_id = a.id), '[]') as told
+         select json_agg(json_build_object('person', p.name, 'means', o.means, 'at', o.sent_at,
+             'state', case when o.sent_at is not null then 'sent' when o.dropped_at is not null then 'dropped' when o.failed_at is not null then 'failed' when o.held_by is not null then 'held' else 'waiting' end,
+             'heldBy', o.held_by, 'due', o.next_attempt_at, 'error', o.last_error) order by o.id)
+         from outbox o join people p on p.id = o.person_id where o.alert_id = a.id), '[]') as told,
+       (select max(m.until_at) from mutes m where m.batch_id = a.batch_id and m.ended_at is null and m.until_at > now()) as "mutedUntil"
      from alerts a
      join batches b on b.id = a.batch_id
      left join people taker on taker.id = a.acknowledged_by

@@ -26,10 +26,15 @@ const schema = z.object({
   AUTH_SECRET: z.string().min(32, 'must have at least 32 characters; unset it to have one made').optional(),
   SMTP_URL: url('smtp', 'smtps'),
   MAIL_FROM: z.string().min(3).default('Fallbright <watch@fallbright.example>'),
+  /** The pair for push messages; unset: made and kept in DATA_DIR. */
+  VAPID_PUBLIC_KEY: z.string().regex(/^[A-Za-z0-9_-]{80,}$/, 'must be a key of `npx web-push generate-vapid-keys`').optional(),
+  VAPID_PRIVATE_KEY: z.string().regex(/^[A-Za-z0-9_-]{40,}$/, 'must be a key of `npx web-push generate-vapid-keys`').optional(),
   MAILBOX_SMTP_PORT: port(2525),
   MAILBOX_PORT: port(3001),
   S3_ENDPOINT: url('http', 'https'),
   S3_BUCKET: z.string().min(3).default('fallbright'),
+  /** 1: push services inside this network and over plain http; unset: only outside production. */
+  ALLOW_PRIVATE_TARGETS: z.enum(['0', '1'], 'must be 0 or 1').optional(),
   DEMO: z.enum(['0', '1'], 'must be 0 or 1').default('0').transform((value) => value === '1'),
   LOG_LEVEL: z.enum(['fatal', 'error', 'warn', 'info', 'debug', 'trace', 'silent']).default('info'),
 });
@@ -62,6 +67,12 @@ export function parseEnv(variables: Record<string, string | undefined>): Env {
     PUBLIC_URL: (value.PUBLIC_URL ?? `http://${value.HOST === '0.0.0.0' ? '127.0.0.1' : value.HOST}:${value.PORT}`).replace(/\/$/, ''),
     SMTP_URL: value.SMTP_URL ?? `smtp://127.0.0.1:${value.MAILBOX_SMTP_PORT}`,
   };
+}
+
+/** Whether messages may be sent to addresses inside this network. */
+export function privateTargetsAllowed(): boolean {
+  const { ALLOW_PRIVATE_TARGETS: told, NODE_ENV } = env();
+  return told === undefined ? NODE_ENV !== 'production' : told === '1';
 }
 
 let cached: Env | undefined;

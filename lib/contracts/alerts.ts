@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { MEANS } from '../core/alerts/telling';
 import { CALL_NAMES } from '../core/types';
 import { callSchema } from './assessment';
 import { id, text, timestamp } from './common';
@@ -29,7 +30,20 @@ export const alertSchema = z.object({
   /** The call as it was when the alert opened. */
   evidence: callSchema,
   /** Who was told, when, by which means, and whether it went. */
-  told: z.array(z.object({ person: z.string(), means: z.literal('mail'), at: z.string().nullable(), state: z.enum(['waiting', 'sent', 'failed']), error: z.string().nullable() })),
+  told: z.array(
+    z.object({
+      person: z.string(),
+      means: z.enum(MEANS),
+      at: z.string().nullable(),
+      /** `held`: it waits until `due`, for quiet hours, a mute or somebody else's turn. `dropped`: nobody had to hear it any more; `error` says why. */
+      state: z.enum(['waiting', 'held', 'sent', 'failed', 'dropped']),
+      held_by: z.enum(['quiet', 'mute', 'turn']).nullable(),
+      due: z.string().nullable(),
+      error: z.string().nullable(),
+    }),
+  ),
+  /** The vessel is muted until then. */
+  muted_until: z.string().nullable(),
 });
 export type AlertBody = z.infer<typeof alertSchema>;
 

@@ -2,9 +2,11 @@ import type { AlertPayload, MailPayload, RenderContext, Rendered } from './paylo
 import { alertOpened } from './templates/alert-opened';
 import { alertRepeated } from './templates/alert-repeated';
 import { alertResolved } from './templates/alert-resolved';
+import { digestMail } from './templates/digest';
 import { ingestMail } from './templates/ingest';
 import { lookAgain } from './templates/look-again';
 import { several } from './templates/several';
+import { testMail } from './templates/test';
 
 const ALERT_TEMPLATES: Record<AlertPayload['event'], (payload: AlertPayload, context: RenderContext) => Rendered> = {
   opened: alertOpened,
@@ -18,5 +20,14 @@ export function compose(payloads: readonly MailPayload[], context: RenderContext
   const [only, ...more] = payloads;
   if (!only) throw new RangeError('A mail needs something to tell.');
   if (more.length) return several(payloads, context);
-  return only.template === 'ingest' ? ingestMail(only, context) : ALERT_TEMPLATES[only.event](only, context);
+  switch (only.template) {
+    case 'alert':
+      return ALERT_TEMPLATES[only.event](only, context);
+    case 'ingest':
+      return ingestMail(only, context);
+    case 'digest':
+      return digestMail(only, context);
+    case 'test':
+      return testMail(only, context);
+  }
 }

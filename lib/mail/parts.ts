@@ -36,7 +36,10 @@ export function evidenceAndAct({ alert }: AlertPayload): Block[] {
 
 export const batchLink = ({ batch }: AlertPayload, { publicUrl }: RenderContext): Block => ({ type: 'link', label: 'Open the batch', url: `${publicUrl}/batches/${encodeURIComponent(batch.id)}` });
 
-/** Where to say that one has it; then nobody is told again. */
-export const takeLink = ({ alert }: AlertPayload, { publicUrl }: RenderContext): Block => ({ type: 'way', label: 'I have it', url: `${publicUrl}/alerts?alert=${encodeURIComponent(alert.id)}`, after: 'then nobody is told again.' });
+/** Where to say that one has it; then nobody is told again. The reader's own link needs no signing in. */
+export function takeLink({ alert }: AlertPayload, { publicUrl, takeUrls }: RenderContext): Block {
+  const own = takeUrls?.get(alert.id);
+  return { type: 'way', label: 'I have it', url: own ?? `${publicUrl}/alerts?alert=${encodeURIComponent(alert.id)}`, after: own ? 'opens a page with one button; then nobody is told again.' : 'then nobody is told again.' };
+}
 
 export const cellarFoot = ({ cellar }: AlertPayload): Block => ({ type: 'foot', text: `${cellar.name}. Times are those of ${cellar.time_zone.replaceAll('_', ' ')}. Where local law or licensed practice says otherwise, follow it.` });

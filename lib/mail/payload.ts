@@ -32,10 +32,33 @@ const ingestPayload = z.object({
   time_zone: z.string(),
 });
 
-export const mailPayload = z.discriminatedUnion('template', [alertPayload, ingestPayload]);
+/** The morning's rounds and shelf of one cellar, for one person. */
+const digestPayload = z.object({
+  template: z.literal('digest'),
+  at: z.string(),
+  cellar: z.object({ name: z.string(), time_zone: z.string() }),
+  /** The reader's own clock. */
+  time_zone: z.string(),
+  jobs: z.array(z.object({ title: z.string(), due: z.string(), late: z.boolean(), exact: z.boolean(), place: z.string().nullable(), taken_by: z.string().nullable() })),
+  /** Jobs beyond those. */
+  more_jobs: z.number(),
+  /** The next one after today; null: none is known. */
+  next_job: z.object({ title: z.string(), due: z.string() }).nullable(),
+  /** What wants a person first. */
+  lanes: z.array(z.object({ id: z.string(), name: z.string(), tag: z.number().nullable(), state: z.string(), headline: z.string(), gravity: z.number().nullable() })),
+  more_lanes: z.number(),
+  muted: z.array(z.object({ name: z.string(), until: z.string(), by: z.string().nullable() })),
+});
+
+/** Somebody wants to see whether messages reach them. */
+const testPayload = z.object({ template: z.literal('test'), at: z.string(), time_zone: z.string() });
+
+export const mailPayload = z.discriminatedUnion('template', [alertPayload, ingestPayload, digestPayload, testPayload]);
 export type MailPayload = z.infer<typeof mailPayload>;
 export type AlertPayload = z.infer<typeof alertPayload>;
 export type IngestPayload = z.infer<typeof ingestPayload>;
+export type DigestPayload = z.infer<typeof digestPayload>;
+export type TestPayload = z.infer<typeof testPayload>;
 
 /** A mail ready but for its address. */
 export interface Rendered {
@@ -47,4 +70,6 @@ export interface Rendered {
 export interface RenderContext {
   /** Where links lead, without a slash at the end. */
   publicUrl: string;
+  /** By alert: the address at which this reader takes it without signing in. */
+  takeUrls?: ReadonlyMap<string, string>;
 }

@@ -49,7 +49,7 @@ function blockHtml(block: Block): string {
     case 'prose':
       return `<p class="ink" style="margin:0 0 14px;font:400 16px/23px ${SERIF};color:${COLOURS.ink}">${withFigures(block.text)}</p>`;
     case 'part':
-      return `<p class="ink2 ruled" style="margin:18px 0 6px;padding-bottom:3px;border-bottom:1px solid #8FA292;font:500 12px/18px ${MONO};color:${COLOURS.ink2}">${escapeHtml(block.label)}</p><p class="ink" style="margin:0 0 14px;font:400 16px/23px ${SERIF};color:${COLOURS.ink}">${withFigures(block.text)}</p>`;
+      return `<p class="ink2 ruled" style="margin:18px 0 6px;padding-bottom:3px;border-bottom:1px solid #8FA292;font:500 12px/18px ${MONO};color:${COLOURS.ink2}">${escapeHtml(block.label)}</p><p class="ink" style="margin:0 0 14px;font:400 16px/23px ${SERIF};color:${COLOURS.ink}">${withFigures(block.text).replaceAll('\n', '<br>')}</p>`;
     case 'figures':
       return `<table role="presentation" cellpadding="0" cellspacing="0" style="border-collapse:collapse;margin:0 0 14px">${block.rows
         .map(

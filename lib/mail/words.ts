@@ -15,6 +15,9 @@ export function when(iso: string, timeZone: string): string {
   return `${part('weekday')} ${part('day')} ${part('month')} ${part('hour')}:${part('minute')}`;
 }
 
+/** `Wed 15 Oct` */
+export const headlineDay = (iso: string, timeZone: string): string => when(iso, timeZone).slice(0, -6);
+
 /** `10 min`, `4 h 10 min`, `31 h`, `3 days`. */
 export function lasting(fromIso: string, toIso: string): string {
   const minutes = Math.max(0, Math.round((Date.parse(toIso) - Date.parse(fromIso)) / 60_000));

@@ -1,6 +1,8 @@
 import { forgetOldLetters } from '@/db/queries/letters';
+import { forgetEndedDevices } from '@/db/queries/devices';
 import { forgetOldMails } from '@/db/queries/outbox';
 import { forgetOldTries } from '@/db/queries/sign-in-tries';
+import { forgetOldTakeLinks } from '@/db/queries/take-links';
 import { forgetOldBeats } from './heartbeat';
 import { purgeRefusals } from './readings/purge';
 
@@ -16,4 +18,6 @@ export async function dropWhatIsOld(): Promise<void> {
   await forgetOldLetters(LETTERS_KEPT_DAYS);
   await forgetOldTries();
   await forgetOldBeats();
+  await forgetOldTakeLinks();
+  await forgetEndedDevices();
 }

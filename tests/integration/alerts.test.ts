@@ -225,7 +225,7 @@ describe('the list', () => {
   it('shows that a mail failed, and why', async () => {
     await h.stalled();
     await OutboxMail.update({ failedAt: new Date(), lastError: '550 no such mailbox' }, { where: { personId: h.hand.personId } });
-    expect((await list(h.keeper)).items[0]!.told).toContainEqual({ person: h.hand.person.name, means: 'mail', at: null, state: 'failed', error: '550 no such mailbox' });
+    expect((await list(h.keeper)).items[0]!.told).toContainEqual({ person: h.hand.person.name, means: 'mail', at: null, state: 'failed', held_by: null, due: null, error: '550 no such mailbox' });
   });
 });
 

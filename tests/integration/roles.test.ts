@@ -10,16 +10,17 @@ import { useDatabase } from '../support/database';
 import { buildBatch, buildCellar, buildEntry, buildMember, buildSensor } from '../support/factories';
 import { jobRows } from '../support/job-rows';
 import { jobThings } from '../support/job-things';
+import { messageRows, messageThings } from '../support/message-rows';
 import { EVERYBODY, SHELF_SPAN, watchRows, type RoleRow, type Things } from '../support/role-rows';
 import { call, sessionCookie, startWeb, type Web } from '../support/web';
 
 const ROUTES = join(import.meta.dirname, '../../app/api/v1');
 
 /** A part of the API that brings routes brings its rows: name them here. */
-const TABLE: Partial<Record<EndpointName, RoleRow>> = { ...watchRows, ...jobRows };
+const TABLE: Partial<Record<EndpointName, RoleRow>> = { ...watchRows, ...jobRows, ...messageRows };
 
 /** Tested where they are at home: by a sensor's credential, in the open, by an address that is the key, as a stream. */
-const ELSEWHERE = new Set<string>(['postTelemetry', 'getOpenApi', 'streamEvents', 'readCalendar', 'getShared', 'tasteShared'] satisfies EndpointName[]);
+const ELSEWHERE = new Set<string>(['postTelemetry', 'getOpenApi', 'streamEvents', 'readCalendar', 'getShared', 'tasteShared', 'getTakeLink', 'useTakeLink'] satisfies EndpointName[]);
 
 const EVIDENCE: Call = { verdict: 'yes', kind: 'stuck', since: 0, expectedAt: null, headline: 'Warm it.', reason: 'No fall.', act: null, changesIt: null, evidence: [] };
 
@@ -30,7 +31,7 @@ async function things(cellarId: string, personId: string): Promise<Things> {
   const { sensor } = await buildSensor({ batch });
   const alert = await Alert.create({ cellarId, batchId: batch.id, call: 'stalled', kind: 'stuck', level: 'check', state: 'open', since: new Date(), openedAt: new Date(), evidence: EVIDENCE });
   const signIn = await SignIn.create({ personId, expiresAt: new Date(Date.now() + 3_600_000) });
-  return { batchId: batch.id, entryId: entry.id, sensorId: sensor.identifier, alertId: alert.id, signInId: signIn.id, cellarId, ...(await jobThings({ ...other, role: 'brewer' }, personId)) };
+  return { batchId: batch.id, entryId: entry.id, sensorId: sensor.identifier, alertId: alert.id, signInId: signIn.id, cellarId, ...(await messageThings({ cellarId, batchId: batch.id, personId, signInId: signIn.id })), ...(await jobThings({ ...other, role: 'brewer' }, personId)) };
 }
 
 describe('who may do what', () => {

@@ -11,6 +11,8 @@ export const BREWERS: Who[] = ['keeper', 'brewer'];
 export interface Things extends JobThings {
   batchId: string;
   entryId: string;
+  muteId: string;
+  deviceId: string;
   sensorId: string;
   alertId: string;
   signInId: string;

@@ -1,8 +1,10 @@
-import { batchLink, evidenceAndAct, stateOf } from '../parts';
+import { batchLink, evidenceAndAct, stateOf, takeLink } from '../parts';
 import type { AlertPayload, MailPayload, RenderContext, Rendered } from '../payload';
 import { render, type Block } from '../render';
 import { bare, lasting, vesselName, when } from '../words';
+import { digestBlocks, digestSubject } from './digest';
 import { ingestMail } from './ingest';
+import { testMail } from './test';
 
 const ORDER = { act: 0, check: 1, know: 2 } as const;
 const EVENT_ORDER = { opened: 0, repeated: 1, look_again: 2, resolved: 3 } as const;
@@ -26,6 +28,7 @@ function item(payload: AlertPayload, context: RenderContext, warned: Set<string>
     line,
     ...evidenceAndAct(payload).filter((block) => block.type !== 'caution' || !known),
     batchLink(payload, context),
+    ...(event === 'look_again' ? [] : [takeLink(payload, context)]),
   ];
 }
 
@@ -33,16 +36,28 @@ function item(payload: AlertPayload, context: RenderContext, warned: Set<string>
 export function several(payloads: readonly MailPayload[], context: RenderContext): Rendered {
   const alerts = payloads.filter((payload) => payload.template === 'alert').toSorted(byUrgency);
   const house = payloads.filter((payload) => payload.template === 'ingest');
+  const digests = payloads.filter((payload) => payload.template === 'digest');
+  const tests = payloads.filter((payload) => payload.template === 'test').slice(0, 1);
   const begun = alerts.filter((payload) => payload.event !== 'resolved');
   const urgent = begun.some((payload) => payload.alert.level === 'act');
   const lead = begun[0] ?? alerts[0];
-  const count = `${alerts.length + house.length} messages`;
-  const subject = lead ? `${urgent ? 'Now: ' : ''}${count}: ${vesselName(lead.batch)}: ${bare(lead.alert.headline)}, and more` : `${count} about readings that do not come in`;
+  const told = alerts.length + house.length;
+  const count = `${told} ${told === 1 ? 'message' : 'messages'}`;
+  const first = digests[0];
+  const subject = lead
+    ? `${urgent ? 'Now: ' : ''}${count}: ${vesselName(lead.batch)}: ${bare(lead.alert.headline)}${told > 1 || first ? ', and more' : ''}`
+    : told
+      ? `${count} about readings that do not come in`
+      : first
+        ? `${digestSubject(first)}${digests.length > 1 ? ', and more' : ''}`
+        : testMail(tests[0]!, context).subject;
   const warned = new Set<string>();
   return render(subject, [
-    { type: 'title', text: `${count} at once` },
+    ...(told ? [{ type: 'title', text: told > 1 ? `${count} at once` : count } as const] : []),
     ...house.map((payload): Block => ({ type: 'prose', text: `${ingestMail(payload, context).subject} (${when(payload.at, payload.time_zone)}).` })),
     ...alerts.flatMap((payload) => item(payload, context, warned)),
+    ...digests.flatMap((payload): Block[] => [{ type: 'rule' }, ...digestBlocks(payload, context)]),
+    ...tests.map((): Block => ({ type: 'prose', text: 'You asked whether messages arrive: they do.' })),
     { type: 'rule' },
     { type: 'foot', text: 'They were owed together, so they come as one mail. Where local law or licensed practice says otherwise, follow it.' },
   ]);

@@ -3,15 +3,16 @@ import { isDeepStrictEqual } from 'node:util';
 import type { Transaction } from 'sequelize';
 import { Alert } from '@/db/models';
 import { lockAlertStates, saveAlertState } from '@/db/queries/alert-states';
-import { toldOfAlerts } from '@/db/queries/outbox';
+import { ruleSettingsOf } from '@/db/queries/messages';
+import { dropHeld } from '@/db/queries/outbox';
 import { notifyChange } from '@/lib/services/changes';
 import { lookAt, type LookContext } from '@/lib/core/alerts/look';
 import { INACTIVE, isUp, step, type AlertEvent, type AlertState, type Look } from '@/lib/core/alerts/machine';
-import { ALERT_RULES, type AlertRule } from '@/lib/core/alerts/rules';
+import { ALERT_RULES, ruleAsSet, type AlertRule } from '@/lib/core/alerts/rules';
 import type { Assessment, Call, Instant } from '@/lib/core/types';
 import type { AlertPayload } from '@/lib/mail/payload';
 import { alertPayload, type BatchName, type CellarName } from './payload';
-import { tell } from './tell';
+import { tell, toldAsAsked, toldBefore, toldFirst } from './tell';
 
 interface Judged {
   batch: BatchName;
@@ -30,7 +31,7 @@ interface Standing {
 
 /**
  * Moves every rule of a batch one step, and carries out what the steps decide:
- * the alert's row, the state of the machine and the mails owed are written in
+ * the alert's row, the state of the machine and the messages owed are written in
  * the one transaction given.
  * @returns whether anything a person sees has changed
  */
@@ -40,11 +41,14 @@ export async function evaluateAlerts(judged: Judged, transaction: Transaction): 
   const ids = rows.flatMap((row) => (row.alertId === null ? [] : [row.alertId]));
   const alerts = ids.length ? await Alert.findAll({ where: { id: ids }, transaction }) : [];
 
+  const settings = await ruleSettingsOf(batch.cellarId, batch.id, transaction);
+
   let seen = false;
-  for (const rule of ALERT_RULES) {
+  for (const usual of ALERT_RULES) {
+    const { rule, enabled } = ruleAsSet(usual, settings);
     const row = rows.find((item) => item.rule === rule.name);
     const before: Standing = { state: row?.state ?? INACTIVE, alert: alerts.find((item) => item.id === row?.alertId) ?? null };
-    const look: Look = judged.assessment ? lookAt(rule, judged.assessment, judged.context, at) : { type: 'end' };
+    const look: Look = judged.assessment && enabled ? lookAt(rule, judged.assessment, judged.context, at) : { type: 'end' };
     const { state, events } = step(rule, before.state, look, at);
     const call = judged.assessment?.calls[rule.call] ?? null;
     let alert = before.alert;
@@ -73,9 +77,9 @@ interface Happened {
 /** Writes what one event means. Returns the alert that it concerns. */
 async function carryOut({ judged, rule, call, event, alert }: Happened, transaction: Transaction): Promise<Alert | null> {
   const { batch, cellar, at } = judged;
-  const mail = async (subject: Alert, name: AlertPayload['event'], key: string, people: readonly string[], shown: Call) => {
+  const message = async (subject: Alert, name: AlertPayload['event'], key: string, people: Parameters<typeof tell>[1], shown: Call) => {
     const payload = alertPayload({ alertId: subject.id, rule, event: name, call: shown, since: subject.since.getTime(), at, batch, cellar });
-    await tell({ cellarId: batch.cellarId, alertId: subject.id, people, key: `alert:${subject.id}:${key}`, payload, level: rule.level, at }, transaction);
+    await tell({ cellarId: batch.cellarId, alertId: subject.id, key: `alert:${subject.id}:${key}`, payload, level: rule.level, at }, people, transaction);
   };
 
   switch (event.type) {
@@ -86,19 +90,21 @@ async function carryOut({ judged, rule, call, event, alert }: Happened, transact
         { id: randomUUID(), cellarId, batchId, call: rule.call, kind: call.kind, level: rule.level, state: 'open', since: new Date(event.since), openedAt: new Date(at), evidence: call },
         { transaction },
       );
-      await mail(opened, 'opened', 'opened', await toldOfAlerts(cellarId, transaction), call);
+      await message(opened, 'opened', 'opened', await toldFirst(cellarId, rule, transaction), call);
       return opened;
     }
     case 'repeated':
-      if (alert && call) await mail(alert, 'repeated', `repeated-${event.count}`, await toldOfAlerts(batch.cellarId, transaction), call);
+      if (alert && call) await message(alert, 'repeated', `repeated-${event.count}`, await toldBefore(alert.id, transaction), call);
       return alert;
     case 'look_again':
-      if (alert?.acknowledgedBy) await mail(alert, 'look_again', `look-again-${at}`, [alert.acknowledgedBy], call ?? alert.evidence);
+      if (alert?.acknowledgedBy) await message(alert, 'look_again', `look-again-${at}`, await toldAsAsked(batch.cellarId, rule, alert.acknowledgedBy, transaction), call ?? alert.evidence);
       return alert;
     case 'resolved':
       if (!alert) return null;
       await alert.update({ state: 'resolved', resolvedAt: new Date(at) }, { transaction });
-      if (rule.tellsEnd && event.by === 'data') await mail(alert, 'resolved', 'resolved', await toldOfAlerts(batch.cellarId, transaction), alert.evidence);
+      // Whoever was still to be told need not hear of it at all.
+      await dropHeld(alert.id, new Date(at), 'it had passed before its time came', transaction);
+      if (rule.tellsEnd && event.by === 'data') await message(alert, 'resolved', 'resolved', await toldBefore(alert.id, transaction), alert.evidence);
       return alert;
     case 'taken':
       return alert;

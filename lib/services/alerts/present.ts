@@ -23,6 +23,7 @@ export function presentAlert(row: AlertRow): AlertBody {
     resolved_at: iso(row.resolvedAt),
     resolved_by: row.resolvedBy,
     evidence: presentCall(row.evidence),
-    told: row.told.map((one) => ({ person: one.person, means: 'mail', at: iso(one.at), state: one.state, error: one.error })),
+    told: row.told.map((one) => ({ person: one.person, means: one.means, at: iso(one.at), state: one.state, held_by: one.state === 'held' ? one.heldBy : null, due: one.state === 'held' ? iso(one.due) : null, error: one.error })),
+    muted_until: iso(row.mutedUntil),
   });
 }

@@ -1,6 +1,7 @@
 import type { z } from 'zod';
 import { inTransaction } from '@/db/client';
 import { saveAlertState } from '@/db/queries/alert-states';
+import { dropHeld } from '@/db/queries/outbox';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
@@ -28,6 +29,7 @@ export async function resolveAlert(actor: Actor, id: string, { note }: z.infer<t
       await saveAlertState(alert.batchId, { ...standing, state }, transaction);
     }
     await alert.update({ state: 'resolved', resolvedAt: new Date(now), resolvedBy: actor.personId, ...(note === null ? {} : { note }) }, { transaction });
+    await dropHeld(id, new Date(now), 'it was cleared before its time came', transaction);
     await auditBy(actor, 'alert.resolve', id, { note }, transaction);
     await notifyChange({ cellar: actor.cellarId, kind: 'alert', batch: alert.batchId }, transaction);
     return alertBody(actor.cellarId, id, transaction);

@@ -39,6 +39,6 @@ async function tellKeepers(event: AlertEvent, before: IngestState | null, after:
   const count = event.type === 'repeated' ? `-${event.count}` : '';
   for (const { personId, timeZone } of await keepersOfWorkingCellars(transaction)) {
     const payload = { template: 'ingest', event: event.type, at: new Date(now).toISOString(), since, time_zone: timeZone } as const;
-    await tell({ cellarId: null, alertId: null, people: [personId], key: `ingest:${open.openedAt}:${event.type}${count}`, payload, level: 'check', at: now }, transaction);
+    await tell({ cellarId: null, alertId: null, key: `ingest:${open.openedAt}:${event.type}${count}`, payload, level: 'check', at: now }, [{ personId, means: 'mail' }], transaction);
   }
 }

@@ -21,6 +21,7 @@ const alert = (over: Partial<AlertBody> = {}): AlertBody => ({
   resolved_by: null,
   evidence: call(),
   told: [],
+  muted_until: null,
   ...over,
 });
 
@@ -42,10 +43,18 @@ describe('an alert in the list', () => {
 
   it('says who was told, who has it, and that the time to look again has passed', () => {
     const told = [
-      { person: 'Bram', means: 'mail' as const, at: null, state: 'waiting' as const, error: null },
-      { person: 'Oriel', means: 'mail' as const, at: hours(-2.5), state: 'sent' as const, error: null },
+      { person: 'Bram', means: 'mail' as const, at: null, state: 'waiting' as const, held_by: null, due: null, error: null },
+      { person: 'Oriel', means: 'mail' as const, at: hours(-2.5), state: 'sent' as const, held_by: null, due: null, error: null },
     ];
     expect(toldLines({ told }, NOW, 'UTC').map((line) => line.text)).toEqual(['told Oriel 12:02', 'telling Bram']);
+    const held = { person: 'Ines', means: 'push' as const, at: null, state: 'held' as const, held_by: 'quiet' as const, due: hours(3), error: null };
+    const dropped = { person: 'Tove', means: 'mail' as const, at: null, state: 'dropped' as const, held_by: null, due: null, error: 'somebody had it before its time came' };
+    expect(toldLines({ told: [dropped, held, ...told] }, NOW, 'UTC').map((line) => line.text)).toEqual([
+      'told Oriel 12:02',
+      'telling Bram',
+      'Ines on the device from 17:32: quiet hours',
+      'Tove not told: somebody had it before its time came',
+    ]);
     const taken = alert({ state: 'acknowledged', acknowledged_by: { id: ID, name: 'Ines' }, look_again_at: hours(-1) });
     expect(alertFate(taken, NOW, 'UTC').map((line) => line.text)).toEqual(['Ines has it', 'was to look again 13:32']);
     expect(alertFate(alert({ state: 'resolved', resolved_at: hours(-1) }), NOW, 'UTC')[0]!.text).toBe('passed by itself, 13:32');

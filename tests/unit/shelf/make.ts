@@ -87,6 +87,7 @@ export function anAlert(lane: LaneBody, given: Partial<AlertBody> = {}): AlertBo
     resolved_by: null,
     evidence: quiet,
     told: [],
+    muted_until: null,
     ...given,
   };
 }
