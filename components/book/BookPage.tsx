@@ -18,7 +18,7 @@ import { useMe } from '@/lib/client/me';
 import type { LOT_SORTS, LotSummary } from '@/lib/contracts/lots';
 import { DRINK_KINDS, type DrinkKind } from '@/lib/core/types';
 import { Places } from './Places';
-import { dayWords, leftWords, money, SPARKLE_WORDS, strengthWords } from './words';
+import { costWords, dayWords, leftWords, SPARKLE_WORDS, strengthWords } from './words';
 
 type StateTab = NonNullable<LotSearch['state']>;
 type Sort = (typeof LOT_SORTS)[number];
@@ -56,7 +56,7 @@ function LotRow({ lot, timeZone, now }: { lot: LotSummary; timeZone: string; now
           <span className="block font-semibold">{leftWords(lot.counts)}</span>
           <span className="text-ink2">
             {lot.places.join(', ') || 'no place named'}
-            {lot.cost_per_litre && `; ${money(lot.cost_per_litre)} a litre`}
+            {lot.cost_per_litre && `; ${costWords(lot)} a litre`}
           </span>
         </span>
         <span className="type-label">

@@ -10,6 +10,7 @@ import { Shares } from '@/components/share/Shares';
 import { Tastings } from '@/components/tasting/Tastings';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Haze } from '@/components/ui/Haze';
+import { How } from '@/components/ui/How';
 import { ErrorState, FormError } from '@/components/ui/Notice';
 import { useNow } from '@/components/ui/now';
 import { GroupBar, PageHead } from '@/components/ui/Page';
@@ -20,15 +21,18 @@ import { undoOpening, useLot } from '@/lib/client/lots';
 import { useMe } from '@/lib/client/me';
 import type { LotBody } from '@/lib/contracts/lots';
 import { BOTTLES, CLOSURE_CATALOGUE } from '@/lib/core/bottling/bottles';
+import type { How as HowAnswer } from '@/lib/core/how/how';
+import { BenchRecord } from './BenchRecord';
+import { EditLot } from './EditLot';
 import { Serve } from './Serve';
-import { dayWords, leftWords, money, OPENING_WORDS, SPARKLE_WORDS, strengthWords } from './words';
+import { costWords, dayWords, leftWords, money, OPENING_WORDS, SPARKLE_WORDS, strengthWords } from './words';
 
 /** One lot of the cellar book. */
 export function LotPage({ id }: { id: string }) {
   const { lot, error, retry } = useLot(id);
   const { me, may } = useMe();
   const now = useNow();
-  const [serving, setServing] = useState(false);
+  const [opened, setOpened] = useState<'serve' | 'edit' | null>(null);
   if (error && !lot) {
     return (
       <ErrorState title={error.status === 404 ? 'There is no such lot in this cellar' : 'The lot did not load'} onRetry={retry}>
@@ -53,7 +57,8 @@ export function LotPage({ id }: { id: string }) {
           </>
         }
       >
-        {may('lots.serve') && lot.counts.left > 0 && <Button onClick={() => setServing(true)}>Open, give, move</Button>}
+        {may('lots.serve') && lot.counts.left > 0 && <Button onClick={() => setOpened('serve')}>Open, give, move</Button>}
+        {may('lots.update') && <Button onClick={() => setOpened('edit')}>Write on it</Button>}
         {may('labels.print') && <LinkButton href={`/labels?lot=${lot.id}`}>Labels</LinkButton>}
       </PageHead>
       {lot.caution && (
@@ -65,13 +70,17 @@ export function LotPage({ id }: { id: string }) {
         </section>
       )}
       <dl className="grid grid-cols-2 border-b strip:grid-cols-4 wide:grid-cols-8">
-        {factsOf(lot, day).map(([name, figure]) => (
+        {factsOf(lot, day).map(({ name, says, how }) => (
           <div key={name} className="border-r border-b border-rule px-3 py-2 first:pl-(--margin) wide:border-b-0">
             <dt className="type-label text-ink2">{name}</dt>
-            <dd className="font-mono text-[0.9375rem] font-semibold leading-5">{figure}</dd>
+            <dd>
+              <span className="font-mono text-[0.9375rem] font-semibold leading-5">{says}</span>
+              {how && <How how={how} of={name} />}
+            </dd>
           </div>
         ))}
       </dl>
+      {lot.note && <p className="type-body border-b px-(--margin) py-2 break-words">{lot.note}</p>}
       <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px]">
         <div className="min-w-0">
           <Bottles lot={lot} />
@@ -83,25 +92,36 @@ export function LotPage({ id }: { id: string }) {
           {may('shares.manage') && <Shares batchId={lot.batch.id} day={day} />}
         </div>
       </div>
-      {serving && (
-        <Sheet title={`${lot.name}, ${leftWords(lot.counts)}`} onClose={() => setServing(false)}>
-          <Serve lot={lot} onDone={() => setServing(false)} />
+      {opened === 'serve' && (
+        <Sheet title={`${lot.name}, ${leftWords(lot.counts)}`} onClose={() => setOpened(null)}>
+          <Serve lot={lot} onDone={() => setOpened(null)} />
+        </Sheet>
+      )}
+      {opened === 'edit' && (
+        <Sheet title={`Lot ${lot.code}`} onClose={() => setOpened(null)}>
+          <EditLot lot={lot} timeZone={timeZone} onDone={() => setOpened(null)} />
         </Sheet>
       )}
     </div>
   );
 }
 
-function factsOf(lot: LotBody, day: (at: string) => string): [string, string][] {
+interface Fact {
+  name: string;
+  says: string;
+  how?: HowAnswer;
+}
+
+function factsOf(lot: LotBody, day: (at: string) => string): Fact[] {
   return [
-    ['left', `${lot.counts.left} of ${lot.counts.bottled}`],
-    ['bottled', day(lot.bottled_at)],
-    ['ready from', lot.ready ? `${day(lot.ready_from)}, ready` : day(lot.ready_from)],
-    ['sparkle', SPARKLE_WORDS[lot.sparkle]],
-    ['strength', strengthWords(lot.abv_percent)],
-    ['gravity', `${lot.original_gravity?.toFixed(3) ?? '?'} to ${lot.final_gravity?.toFixed(3) ?? '?'}`],
-    ['opened, given', `${lot.counts.opened}, ${lot.counts.given}`],
-    ['cost a litre', lot.cost_per_litre ? `${money(lot.cost_per_litre)}${lot.cost.known ? '' : ' or more'}` : 'not told'],
+    { name: 'left', says: `${lot.counts.left} of ${lot.counts.bottled}` },
+    { name: 'bottled', says: day(lot.bottled_at) },
+    { name: 'ready from', says: lot.ready ? `${day(lot.ready_from)}, ready` : day(lot.ready_from), how: lot.how.ready },
+    { name: 'sparkle', says: SPARKLE_WORDS[lot.sparkle] },
+    { name: 'strength', says: strengthWords(lot.abv_percent), how: lot.how.strength },
+    { name: 'gravity', says: `${lot.original_gravity?.toFixed(3) ?? '?'} to ${lot.final_gravity?.toFixed(3) ?? '?'}` },
+    { name: 'opened, given', says: `${lot.counts.opened}, ${lot.counts.given}` },
+    { name: 'cost a litre', says: costWords(lot), how: lot.how.cost },
   ];
 }
 
@@ -119,8 +139,12 @@ function Bottles({ lot }: { lot: LotBody }) {
               </p>
               <p className="type-label text-ink2">
                 {bottle.rating === 'never' ? 'for still drink' : `holds ${bottle.rating.toFixed(1)} bar${bottle.rating_confirmed ? '' : ', not confirmed'}`}; at most {bottle.cellar_bar.toFixed(1)} bar in the cellar, {bottle.worst_bar.toFixed(1)} at worst
-                {bottle.cost_each && `; ${money(bottle.cost_each)} each`}
+                {bottle.cost_each && `; ${money(bottle.cost_each)} each${lot.cost_known ? '' : ' or more'}`}
               </p>
+              <div className="flex flex-wrap gap-x-4">
+                <How how={bottle.how.cellar} of={`pressure in the cellar, ${sizeWords(bottle.size_ml)}`} />
+                <How how={bottle.how.worst} of={`pressure at worst, ${sizeWords(bottle.size_ml)}`} />
+              </div>
               <p className="type-label">
                 {bottle.left} of {bottle.bottled} left
                 {bottle.stands.filter((stand) => stand.count > 0).map((stand) => `; ${stand.count} in ${stand.place?.name ?? 'no named place'}`)}
@@ -150,7 +174,7 @@ function Openings({ lot, day, mayUndo }: { lot: LotBody; day: (at: string) => st
       {failed && <FormError>{failed}</FormError>}
       <ul className="type-label">
         {lot.openings.map((opening) => (
-          <li key={opening.id} className="flex flex-wrap items-center gap-x-4 border-b border-rule px-(--margin) py-1.5">
+          <li key={opening.id} className="flex flex-wrap items-baseline gap-x-4 border-b border-rule px-(--margin) py-1.5">
             <span className="text-ink2">{day(opening.at)}</span>
             <span className={opening.kind === 'gushed' ? 'font-semibold text-madder' : 'font-semibold'}>
               {opening.count} × {sizeWords(opening.size_ml)} {OPENING_WORDS[opening.kind]}
@@ -175,55 +199,6 @@ function Openings({ lot, day, mayUndo }: { lot: LotBody; day: (at: string) => st
           </li>
         ))}
       </ul>
-    </section>
-  );
-}
-
-/** How the bench judged it; a stop that was put aside stays for good. */
-function BenchRecord({ lot, day }: { lot: LotBody; day: (at: string) => string }) {
-  const { bench, override } = lot;
-  return (
-    <section aria-label="From the bench">
-      <GroupBar word="From the bench" />
-      <div className="border-b px-(--margin) py-3">
-        <State state={override ? 'Stop' : 'Ready'} word={override ? 'Stop, put aside' : 'Held, even at worst'} />
-        <p className="type-verdict-now">{bench.headline}</p>
-        <ul className="type-reason text-ink2">
-          {bench.problems.map((problem) => (
-            <li key={problem}>
-              <Sentence>{problem}</Sentence>
-            </li>
-          ))}
-          <li>
-            <Sentence>{`At most ${bench.worst_bar.toFixed(1)} bar, standing no warmer than ${bench.warmest_store_c} °C.`}</Sentence>
-          </li>
-        </ul>
-        {override && (
-          <blockquote className="type-body mt-2 border-l-[3px] border-madder pl-3">
-            {override.reason}
-            <span className="type-label block text-ink2">
-              {override.by?.name ?? 'somebody who has left'}, {day(override.at)}
-            </span>
-          </blockquote>
-        )}
-        {bench.cautions.length > 0 && (
-          <ul className="type-reason mt-2 list-disc pl-4 text-ink2">
-            {bench.cautions.map((caution) => (
-              <li key={caution}>{caution}</li>
-            ))}
-          </ul>
-        )}
-      </div>
-      {lot.next_time.length > 0 && (
-        <div className="border-b px-(--margin) py-3">
-          <h3 className="type-name-low">Next time</h3>
-          <ul className="type-body">
-            {lot.next_time.map((note, index) => (
-              <li key={index}>{note.note}</li>
-            ))}
-          </ul>
-        </div>
-      )}
     </section>
   );
 }

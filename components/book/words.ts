@@ -19,3 +19,6 @@ export const leftWords = (counts: LotSummary['counts']): string => (counts.left 
 
 /** Money without a currency: the cellar counts in its own. */
 export const money = (range: { lo: number; value: number; hi: number }): string => range.value.toFixed(2);
+
+/** `1.71`, `0.58 or more` where part of it was never told. */
+export const costWords = (lot: Pick<LotSummary, 'cost_per_litre' | 'cost_known'>): string => (lot.cost_per_litre ? `${money(lot.cost_per_litre)}${lot.cost_known ? '' : ' or more'}` : 'not told');

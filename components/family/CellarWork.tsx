@@ -1,6 +1,7 @@
 'use client';
 
 import Link from 'next/link';
+import { useSearchParams } from 'next/navigation';
 import { useState } from 'react';
 import { Additions } from '@/components/additions/Additions';
 import { Finings } from '@/components/additions/Finings';
@@ -8,6 +9,7 @@ import { degrees, litres, percent } from '@/components/batch/figures';
 import { LinkButton } from '@/components/ui/Button';
 import { FilterTabs } from '@/components/ui/FilterTabs';
 import { Haze } from '@/components/ui/Haze';
+import { How } from '@/components/ui/How';
 import { ErrorState } from '@/components/ui/Notice';
 import { useNow } from '@/components/ui/now';
 import { PageHead } from '@/components/ui/Page';
@@ -15,34 +17,49 @@ import { useBatch } from '@/lib/client/batches';
 import { useDrink } from '@/lib/client/cellarwork';
 import { useMe } from '@/lib/client/me';
 import type { DrinkBody } from '@/lib/contracts/family';
+import { how, type How as HowAnswer } from '@/lib/core/how/how';
+import { SOURCES } from '@/lib/core/how/sources';
+import { BlendForm } from './BlendForm';
 import { Family } from './Family';
 import { RackForm } from './RackForm';
+import { SplitForm } from './SplitForm';
 
 const TABS = [
   { value: 'additions', name: 'Additions' },
   { value: 'rack', name: 'Rack' },
   { value: 'top-up', name: 'Top up' },
   { value: 'fine', name: 'Fine' },
+  { value: 'split', name: 'Split' },
+  { value: 'blend', name: 'Blend' },
   { value: 'family', name: 'Family' },
 ] as const;
 type Tab = (typeof TABS)[number]['value'];
 
+/** The gravity that a must with all the sugar so far would have had. */
+const WITH_ADDITIONS = (drink: DrinkBody): HowAnswer =>
+  how('original gravity with all that went in since: masses of liquid, extract and alcohol are conserved', SOURCES.massBalance, [['at the pitch', drink.original_gravity, 'SG']]);
+
+const SULPHITE_SO_FAR: HowAnswer = how('all sulphite that the must brought and the log adds ÷ the volume at the time, thinned by every top-up; what binds and what goes off is not taken off', SOURCES.practice);
+
 /** What is in the vessel by the log, in one ruled line. */
 function InIt({ drink }: { drink: DrinkBody }) {
   const facts = [
-    ['in it', litres(drink.volume_l)],
-    ['original gravity', drink.effective_og?.toFixed(3) ?? 'not told'],
-    ['gravity', drink.gravity === null ? 'not read' : `${drink.gravity.toFixed(3)}${drink.gravity_by ? ` by ${drink.gravity_by}` : ''}`],
-    ['strength', drink.strength ? percent(drink.strength.balling.value.value) : 'not known'],
-    ['temperature', drink.temperature_c === null ? 'not told' : degrees(drink.temperature_c)],
-    ['sulphite added', drink.sulphite_added ? `${Math.ceil(drink.total_sulphite_mg_l.hi)} mg/L at most` : 'none logged'],
-  ] as const;
+    { name: 'in it', says: litres(drink.volume_l) },
+    { name: 'original gravity', says: drink.effective_og?.toFixed(3) ?? 'not told', how: drink.effective_og === drink.original_gravity ? undefined : WITH_ADDITIONS(drink) },
+    { name: 'gravity', says: drink.gravity === null ? 'not read' : `${drink.gravity.toFixed(3)}${drink.gravity_by ? ` by ${drink.gravity_by}` : ''}` },
+    { name: 'strength', says: drink.strength ? percent(drink.strength.balling.value.value) : 'not known', how: drink.strength?.balling.how },
+    { name: 'temperature', says: drink.temperature_c === null ? 'not told' : degrees(drink.temperature_c) },
+    { name: 'sulphite added', says: drink.sulphite_added ? `${Math.ceil(drink.total_sulphite_mg_l.hi)} mg/L at most` : 'none logged', how: drink.sulphite_added ? SULPHITE_SO_FAR : undefined },
+  ];
   return (
     <dl className="grid grid-cols-2 border-b bg-desk strip:grid-cols-3 wide:grid-cols-6">
-      {facts.map(([name, says]) => (
+      {facts.map(({ name, says, how }) => (
         <div key={name} className="px-(--margin) py-2">
           <dt className="type-label text-ink2">{name}</dt>
-          <dd className="font-mono text-[0.875rem] font-semibold">{says}</dd>
+          <dd>
+            <span className="font-mono text-[0.875rem] font-semibold">{says}</span>
+            {how && <How how={how} of={name} />}
+          </dd>
         </div>
       ))}
     </dl>
@@ -51,7 +68,8 @@ function InIt({ drink }: { drink: DrinkBody }) {
 
 /** What is done to a batch in the cellar: additions, racking, topping up, fining; and its family. */
 export function CellarWork({ batchId }: { batchId: string }) {
-  const [tab, setTab] = useState<Tab>('additions');
+  const asked = useSearchParams().get('do');
+  const [tab, setTab] = useState<Tab>(TABS.find((item) => item.value === asked)?.value ?? 'additions');
   const { me, may } = useMe();
   const { batch, error, retry } = useBatch(batchId);
   const { drink, error: noDrink, retry: askDrink } = useDrink(batchId);
@@ -68,7 +86,7 @@ export function CellarWork({ batchId }: { batchId: string }) {
   const now = clockMs / 1000;
   const mayAlter = may('entries.alter') && batch.state === 'working';
   const mayMove = may('cellarwork.do') && batch.state === 'working';
-  const shown = TABS.filter((item) => mayMove || (item.value !== 'rack' && item.value !== 'top-up'));
+  const shown = TABS.filter((item) => mayMove || !['rack', 'top-up', 'split', 'blend'].includes(item.value));
 
   return (
     <>
@@ -103,6 +121,8 @@ export function CellarWork({ batchId }: { batchId: string }) {
         {tab === 'rack' && <RackForm key="rack" batch={batch} rack now={now} timeZone={timeZone} />}
         {tab === 'top-up' && <RackForm key="top-up" batch={batch} rack={false} now={now} timeZone={timeZone} />}
         {tab === 'fine' && <Finings batchId={batch.id} now={now} timeZone={timeZone} mayDo={mayMove} />}
+        {tab === 'split' && <SplitForm batch={batch} now={now} timeZone={timeZone} />}
+        {tab === 'blend' && <BlendForm batch={batch} now={now} timeZone={timeZone} />}
         {tab === 'family' && <Family batchId={batch.id} timeZone={timeZone} />}
       </div>
     </>

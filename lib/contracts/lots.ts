@@ -3,7 +3,7 @@ import { BOTTLE_KINDS, CLOSURES } from '../core/bottling/bottles';
 import { DRINK_KINDS } from '../core/types';
 import { doseSchema } from './bench';
 import { id, line, text, timestamp } from './common';
-import { rangeSchema } from './figures';
+import { howSchema, rangeSchema } from './figures';
 import { nextTimeSchema } from './musts';
 import { tastingSummary } from './tastings';
 
@@ -39,6 +39,7 @@ export const lotBottleSchema = z.object({
   cellar_bar: z.number(),
   warm_bar: z.number(),
   worst_bar: z.number(),
+  how: z.object({ cellar: howSchema, worst: howSchema }),
   bottled: z.number().int(),
   left: z.number().int(),
   stands: z.array(z.object({ place: placeName, count: z.number().int() })),
@@ -67,6 +68,8 @@ const lotFields = {
   caution: z.string().nullable(),
   overridden: z.boolean(),
   cost_per_litre: rangeSchema.nullable(),
+  /** False where part of it was never told: it cost that or more. */
+  cost_known: z.boolean(),
   tastings: tastingSummary,
 };
 
@@ -93,8 +96,12 @@ export const lotSchema = z.object({
   }),
   /** Whoever put a stop aside, and why. */
   override: z.object({ reason: z.string(), by: who, at: z.string() }).nullable(),
+  /** What is written on the lot and on its tastings, newest first. */
   next_time: z.array(nextTimeSchema),
+  /** What is written on the lot itself. */
+  own_next_time: z.string().nullable(),
   note: z.string().nullable(),
+  how: z.object({ strength: howSchema, cost: howSchema, ready: howSchema }),
   cost: z.object({ total: rangeSchema.nullable(), known: z.boolean(), other: z.number().nullable() }),
 });
 export type LotBody = z.infer<typeof lotSchema>;

@@ -23,7 +23,7 @@ export function cell(value: string | number | null): string {
 
 const day = (at: string) => at.slice(0, 10);
 
-const COLUMNS = ['code', 'name', 'batch', 'kind', 'bottled', 'ready_from', 'sparkle', 'litres', 'original_gravity', 'final_gravity', 'abv_percent', 'bottled_count', 'left', 'opened', 'given', 'broken', 'gushed', 'places', 'score', 'tastings', 'cost_per_litre', 'caution', 'override_reason', 'next_time', 'note'] as const;
+const COLUMNS = ['code', 'name', 'batch', 'kind', 'bottled', 'ready_from', 'sparkle', 'litres', 'original_gravity', 'final_gravity', 'abv_percent', 'bottled_count', 'left', 'opened', 'given', 'broken', 'gushed', 'places', 'score', 'tastings', 'cost_per_litre', 'cost_known', 'caution', 'override_reason', 'next_time', 'note'] as const;
 
 function line(row: LotRow, now: number): string {
   const lot = presentLot(row, now);
@@ -49,6 +49,7 @@ function line(row: LotRow, now: number): string {
     score: lot.tastings.score?.mean ?? null,
     tastings: lot.tastings.count,
     cost_per_litre: lot.cost_per_litre && Number(lot.cost_per_litre.value.toFixed(2)),
+    cost_known: lot.cost_per_litre && (lot.cost_known ? 'yes' : 'no'),
     caution: lot.caution,
     override_reason: row.overrideReason,
     next_time: row.nextTime,

@@ -6,10 +6,12 @@ import { times } from '@/lib/core/units/range';
 import { iso } from '../iso';
 import { presentNextTime } from '../musts/get';
 import { summaryOf } from '../tastings/summary';
+import { howOfLot, howOfPressure } from './how';
 import { keptBench, keptCost, keptPressure, totalCost } from './kept';
 
 export function presentLot(row: LotRow, now: number): LotSummary {
-  const total = totalCost(keptCost(row.cost));
+  const cost = keptCost(row.cost);
+  const total = totalCost(cost);
   return {
     id: row.id,
     code: row.code,
@@ -28,6 +30,7 @@ export function presentLot(row: LotRow, now: number): LotSummary {
     caution: row.caution,
     overridden: row.overrideReason !== null,
     cost_per_litre: total && times(total, 1 / row.volumeL),
+    cost_known: cost.known,
     tastings: summaryOf(row.tastings),
   };
 }
@@ -43,6 +46,7 @@ export interface LotParts {
 export function presentWhole(row: LotRow, parts: LotParts, now: number): LotBody {
   const summary = presentLot(row, now);
   const cost = keptCost(row.cost);
+  const bench = keptBench(row.bench);
   return {
     ...summary,
     bottles: parts.bottles.map((bottle) => {
@@ -58,6 +62,7 @@ export function presentWhole(row: LotRow, parts: LotParts, now: number): LotBody
         cellar_bar: pressure.cellarBar,
         warm_bar: pressure.warmBar,
         worst_bar: pressure.worstBar,
+        how: howOfPressure(bench, pressure),
         bottled: bottle.count,
         left: stands.reduce((sum, stand) => sum + stand.count, 0),
         stands,
@@ -66,10 +71,12 @@ export function presentWhole(row: LotRow, parts: LotParts, now: number): LotBody
     }),
     openings: parts.openings.map((opening) => ({ id: opening.id, at: iso(opening.at), kind: opening.kind, bottle_id: opening.lotBottleId, size_ml: opening.sizeMl, count: opening.count, to: opening.to, note: opening.note, place: opening.place, by: opening.by })),
     moves: parts.moves.map((move) => ({ at: iso(move.at), from: move.from, to: move.to, size_ml: move.sizeMl, count: move.count, by: move.by })),
-    bench: keptBench(row.bench).shown,
+    bench: bench.shown,
     override: row.overrideReason === null || row.overrideAt === null ? null : { reason: row.overrideReason, by: row.overrideBy, at: iso(row.overrideAt) },
     next_time: parts.nextTime.map(presentNextTime),
+    own_next_time: row.nextTime,
     note: row.note,
+    how: howOfLot(row, bench, cost),
     cost: { total: totalCost(cost), known: cost.known, other: cost.other },
   };
 }

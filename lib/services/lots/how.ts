@@ -1,0 +1,44 @@
+import { snakeKeys } from '@/lib/contracts/case';
+import type { LotBody } from '@/lib/contracts/lots';
+import { drinkPressure } from '@/lib/core/bottling/co2';
+import { how } from '@/lib/core/how/how';
+import { practice, SOURCES } from '@/lib/core/how/sources';
+import type { LotRow } from '@/db/queries/lots';
+import type { KeptBench, KeptCost, KeptPressure } from './kept';
+
+/** Where the figures of a lot come from, as they were kept on the day it was bottled. */
+export function howOfLot(row: LotRow, bench: KeptBench, cost: KeptCost): LotBody['how'] {
+  const { dose } = bench.shown;
+  const sugar = dose.way === 'weighed' ? `${dose.total_g.toFixed(0)} g of ${dose.sugar.name}` : dose.way === 'drops' ? `${dose.total_drops} drops` : 'none';
+  return {
+    strength: snakeKeys(
+      how('Balling from the gravity with all the sugar that went in and the last hydrometer reading, each good to half a division, and what the sugar for fizz adds', SOURCES.balling, [
+        ['original gravity, with what was added', row.originalGravity, 'SG'],
+        ['final gravity', row.finalGravity, 'SG'],
+        ['sugar for fizz', sugar, ''],
+      ]),
+    ),
+    cost: snakeKeys(
+      how('part of the must sheet’s cost that is in these bottles + what the bottling cost, ÷ litres bottled; one bottle by its size', SOURCES.told, [
+        ['from the must sheet', cost.must && Number(cost.must.value.toFixed(2)), ''],
+        ['every line of it has a cost', cost.known ? 'yes' : 'no', ''],
+        ['bottles, caps and sugar', cost.other, ''],
+        ['bottled', row.volumeL, 'L'],
+      ]),
+    ),
+    ready: snakeKeys(
+      how('with sugar for fizz 14 days at 20 °C, slower in the cold by 2.2 times for 10 °C, never less; still, 7 days. Then as somebody set it', practice('two weeks in the warm, then a cool place'), [
+        ['sugar for fizz', sugar, ''],
+        ['judged for a cellar of', bench.shown.cellar_c, '°C'],
+      ]),
+    ),
+  };
+}
+
+/** Where the pressures of a bottle come from: the gas in it at the two temperatures that the bench judged for. */
+export function howOfPressure({ shown, drink }: KeptBench, pressure: KeptPressure): LotBody['bottles'][number]['how'] {
+  return {
+    cellar: snakeKeys(drinkPressure(pressure.volumes, shown.cellar_c, drink).how),
+    worst: snakeKeys(drinkPressure(pressure.worstVolumes, shown.warmest_store_c, drink).how),
+  };
+}
