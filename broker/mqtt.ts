@@ -25,6 +25,8 @@ export interface BrokerOptions {
 export interface Broker {
   port: number;
   figures(): Record<keyof IngestCounts | 'connections' | 'sensors', number>;
+  /** Lays a message on a topic for whoever subscribes to it later. */
+  retain(topic: string, payload: string): Promise<void>;
   /** Takes no more, commits and acknowledges what it has, closes; true where nothing was left over. */
   stop(patienceMs: number): Promise<boolean>;
 }
@@ -65,6 +67,10 @@ export async function startBroker(options: BrokerOptions): Promise<Broker> {
   return {
     port: (server.address() as AddressInfo).port,
     figures: () => ({ ...ingest.counts, connections: door.connections, sensors: hooks.sensorsConnected }),
+    retain: (topic, payload) =>
+      new Promise((resolve, reject) => {
+        aedes.publish({ cmd: 'publish', topic, payload: Buffer.from(payload), qos: 1, retain: true, dup: false }, (error) => (error ? reject(error) : resolve()));
+      }),
     stop: async (patienceMs) => {
       clearInterval(revocations);
       server.close();

@@ -6,6 +6,7 @@ import { startAnnouncer } from './announce';
 import { startHeartbeat } from './heartbeat';
 import { keepPartitionsAhead } from './keep-partitions';
 import { startBroker } from './mqtt';
+import { keepSettings } from './settings';
 import { onShutdown } from './shutdown';
 
 /** The broker's process: sensors sign in here, and their readings go to PostgreSQL. */
@@ -18,10 +19,12 @@ const broker = await startBroker({ host: env().HOST, port: env().MQTT_PORT, reco
   process.exit(1);
 });
 const stopHeartbeat = startHeartbeat('broker', () => broker.figures());
+const settings = keepSettings((topic, payload) => broker.retain(topic, payload));
 const stopPartitions = keepPartitionsAhead();
 log.info({ host: env().HOST, port: broker.port }, 'broker ready');
 
 onShutdown('broker', async () => {
+  await settings.stop();
   const drained = await broker.stop(DRAIN_MS);
   log.info({ drained, ...broker.figures() }, 'broker stopped');
   stopPartitions();

@@ -8,6 +8,7 @@ import { recordMessages } from '@/lib/services/readings/record';
 import { startAnnouncer } from './announce';
 import { startHeartbeat } from './heartbeat';
 import { keepPartitionsAhead } from './keep-partitions';
+import { keepSettings } from './settings';
 import { onShutdown } from './shutdown';
 import { OutsideBroker } from './subscription';
 
@@ -37,10 +38,12 @@ function instanceName(): string {
 const { announcer, stop: stopAnnouncer } = startAnnouncer();
 const stopPartitions = keepPartitionsAhead();
 const outside = await OutsideBroker.subscribe({ url, instance: instanceName(), record: (messages) => recordMessages(messages, announcer) });
+const settings = keepSettings((topic, payload) => outside.retain(topic, payload));
 const stopHeartbeat = startHeartbeat('broker', () => outside.figures());
 log.info({ broker: new URL(url).host }, 'subscriber ready');
 
 onShutdown('subscriber', async () => {
+  await settings.stop();
   const drained = await outside.stop(DRAIN_MS);
   log.info({ drained, ...outside.figures() }, 'subscriber stopped');
   stopHeartbeat();

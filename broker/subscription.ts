@@ -71,6 +71,13 @@ export class OutsideBroker implements Subscription {
     return { ...this.ingest.counts, connections: this.clients.filter((client) => client.connected).length };
   }
 
+  /** Lays a sensor's settings on its topic; fails where that broker does not let us. */
+  async retain(topic: string, payload: string): Promise<void> {
+    const client = this.clients.find((one) => one.connected);
+    if (!client) throw new Error('the outside broker is away');
+    await client.publishAsync(topic, payload, { qos: 1, retain: true });
+  }
+
   /** Stops reading, commits and acknowledges what it holds; the broker keeps the rest. */
   async stop(patienceMs: number): Promise<boolean> {
     this.stopped = true;

@@ -1,6 +1,7 @@
 import { join } from 'node:path';
 import { systemClock } from '@/lib/clock';
 import { env, EnvError } from '@/lib/config/env';
+import type { SensorSettings } from '@/lib/contracts/telemetry';
 import { logFor } from '@/lib/log';
 import { FastClock } from './fast-clock';
 import { OptionError, parseOptions, plan, USAGE, type Plan } from './options';
@@ -31,14 +32,23 @@ function run(plans: readonly Plan[], speed: number): void {
   const links: SensorLink[] = [];
   const floats = plans.map(({ entry, clockFrom, sendFrom }) => {
     const about = { sensor: entry.sensor, scenario: entry.scenario };
+    // Settings may come before the float is made: then it takes them at its start.
+    let float: RunningFloat | undefined;
+    let told: SensorSettings | undefined;
     const link = new SensorLink({
       url,
+      onSettings: (settings) => {
+        told = settings;
+        float?.obey(settings);
+      },
       sensor: entry.sensor,
       secret: entry.secret,
       onState: (state, detail) => log[state === 'refused' ? 'warn' : 'debug']({ ...about, detail }, `link ${state}`),
     });
     links.push(link);
-    return new RunningFloat(entry, link, new FastClock(systemClock, clockFrom, speed), sendFrom);
+    float = new RunningFloat(entry, link, new FastClock(systemClock, clockFrom, speed), sendFrom);
+    if (told) float.obey(told);
+    return float;
   });
   log.info({ sensors: floats.length, speed }, 'simulated floats at work');
   const timer = setInterval(() => floats.forEach((float) => float.tick()), TICK_MS);

@@ -1,6 +1,6 @@
 import mqtt, { type MqttClient } from 'mqtt';
-import { readingsTopic } from '@/lib/contracts/topics';
-import type { TelemetryReading } from '@/lib/contracts/telemetry';
+import { readingsTopic, settingsTopic } from '@/lib/contracts/topics';
+import { sensorSettings, type SensorSettings, type TelemetryReading } from '@/lib/contracts/telemetry';
 import { Memory } from './memory';
 
 /** Half a year at 15 minutes. */
@@ -17,6 +17,8 @@ export interface LinkOptions {
   secret: string;
   /** Told when the link comes up, goes down, or cannot come up; once for each change. */
   onState?: (state: LinkState, detail?: string) => void;
+  /** Told when the broker hands down settings. */
+  onSettings?: (settings: SensorSettings) => void;
   reconnectMs?: number;
 }
 
@@ -26,6 +28,15 @@ function bare(url: string): string {
   parsed.username = '';
   parsed.password = '';
   return parsed.toString();
+}
+
+/** A small device trusts nobody's bytes: what is not settings is left be. */
+function settingsIn(payload: Buffer): SensorSettings | null {
+  try {
+    return sensorSettings.safeParse(JSON.parse(payload.toString('utf8'))).data ?? null;
+  } catch {
+    return null;
+  }
 }
 
 /**
@@ -53,7 +64,12 @@ export class SensorLink {
     });
     this.client.on('connect', () => {
       this.report('connected');
+      this.client.subscribe(settingsTopic(options.sensor), { qos: 1 });
       this.pump();
+    });
+    this.client.on('message', (_topic, payload) => {
+      const settings = settingsIn(payload);
+      if (settings) options.onSettings?.(settings);
     });
     this.client.on('close', () => {
       if (this.state === 'connected') this.report('closed');
