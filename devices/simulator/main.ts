@@ -33,22 +33,21 @@ function run(plans: readonly Plan[], speed: number): void {
   const floats = plans.map(({ entry, clockFrom, sendFrom }) => {
     const about = { sensor: entry.sensor, scenario: entry.scenario };
     // Settings may come before the float is made: then it takes them at its start.
-    let float: RunningFloat | undefined;
-    let told: SensorSettings | undefined;
+    const held: { float?: RunningFloat; told?: SensorSettings } = {};
     const link = new SensorLink({
       url,
       onSettings: (settings) => {
-        told = settings;
-        float?.obey(settings);
+        held.told = settings;
+        held.float?.obey(settings);
       },
       sensor: entry.sensor,
       secret: entry.secret,
       onState: (state, detail) => log[state === 'refused' ? 'warn' : 'debug']({ ...about, detail }, `link ${state}`),
     });
     links.push(link);
-    float = new RunningFloat(entry, link, new FastClock(systemClock, clockFrom, speed), sendFrom);
-    if (told) float.obey(told);
-    return float;
+    held.float = new RunningFloat(entry, link, new FastClock(systemClock, clockFrom, speed), sendFrom);
+    if (held.told) held.float.obey(held.told);
+    return held.float;
   });
   log.info({ sensors: floats.length, speed }, 'simulated floats at work');
   const timer = setInterval(() => floats.forEach((float) => float.tick()), TICK_MS);

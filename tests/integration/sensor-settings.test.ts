@@ -73,13 +73,13 @@ describe('settings on a sensor’s topic', () => {
     const { sensor, secret } = await buildSensor({ cellarId: keeper.cellarId });
     const start = Date.parse('2026-03-01T00:00:00Z');
     const clock = new ManualClock(start);
-    let float: RunningFloat | undefined;
-    const link = new SensorLink({ url: `mqtt://127.0.0.1:${broker.port}`, sensor: sensor.identifier, secret, onSettings: (told) => float?.obey(told) });
-    float = new RunningFloat({ sensor: sensor.identifier, secret, scenario: 'healthy-cider', seed: 3, startedAt: new Date(start).toISOString(), interval_s: 900 }, link, clock, start);
+    const held: { float?: RunningFloat } = {};
+    const link = new SensorLink({ url: `mqtt://127.0.0.1:${broker.port}`, sensor: sensor.identifier, secret, onSettings: (told) => held.float?.obey(told) });
+    const float = (held.float = new RunningFloat({ sensor: sensor.identifier, secret, scenario: 'healthy-cider', seed: 3, startedAt: new Date(start).toISOString(), interval_s: 900 }, link, clock, start));
     const run = async (hours: number) => {
       clock.advance(hours * 3_600_000);
       const before = link.acknowledged;
-      float!.tick();
+      float.tick();
       await until('the readings to be taken', () => link.waiting === 0 && link.acknowledged > before);
       return link.acknowledged - before;
     };
@@ -88,7 +88,7 @@ describe('settings on a sensor’s topic', () => {
     // The float says which settings it has with its next reading.
     await until('the confirmation', async () => {
       clock.advance(3_600_000);
-      float!.tick();
+      float.tick();
       return (await getSensor(keeper, sensor.identifier)).settings?.confirmed_at !== null;
     });
     expect(await getSensor(keeper, sensor.identifier)).toMatchObject({ interval_s: 3_600 });
