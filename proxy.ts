@@ -4,7 +4,7 @@ import { sessionCookie } from './lib/auth/cookies';
 import { env } from './lib/config/env';
 
 /** Pages that people see before they have signed in. */
-const OPEN = /^\/(sign-in|share)(\/|$)/;
+const OPEN = /^\/(sign-in|share|take|invitation|mail-address)(\/|$)/;
 
 const YEAR_S = 31_536_000;
 
@@ -20,6 +20,8 @@ function contentSecurityPolicy(nonce: string): string {
     "img-src 'self' data: blob:",
     "font-src 'self'",
     "connect-src 'self'",
+    // The service worker, which 'strict-dynamic' would leave out.
+    "worker-src 'self'",
     "object-src 'none'",
     "base-uri 'none'",
     "form-action 'self'",
@@ -64,5 +66,5 @@ export function proxy(request: NextRequest): NextResponse {
 }
 
 export const config = {
-  matcher: ['/((?!_next/static|_next/image|favicon.ico|icon.svg|manifest.webmanifest|.*\\.(?:png|svg|woff2?)$).*)'],
+  matcher: ['/((?!_next/static|_next/image|favicon.ico|icon.svg|manifest.webmanifest|sw.js|.*\\.(?:png|svg|woff2?)$).*)'],
 };

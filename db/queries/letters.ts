@@ -63,3 +63,17 @@ export async function forgetOldLetters(days: number): Promise<void> {
   await database().query(`delete from account_links where expires_at < now() - make_interval(days => $days)`, { bind: { days } });
   await database().query(`delete from invitations where accepted_at is null and least(expires_at, coalesce(revoked_at, expires_at)) < now() - make_interval(days => $days)`, { bind: { days } });
 }
+
+/** How far each of these letters got, by its key. */
+export async function letterStates(keys: readonly string[]): Promise<Map<string, 'waiting' | 'sent' | 'failed'>> {
+  const rows = await database().query<{ key: string; state: 'waiting' | 'sent' | 'failed' }>(
+    `select dedupe_key as key, case when sent_at is not null then 'sent' when failed_at is not null then 'failed' else 'waiting' end as state from letters where dedupe_key = any($keys::text[])`,
+    { bind: { keys }, type: QueryTypes.SELECT },
+  );
+  return new Map(rows.map(({ key, state }) => [key, state]));
+}
+
+/** Nothing more is written to somebody who is gone. */
+export async function forgetLettersTo(personId: string, transaction: Transaction): Promise<void> {
+  await database().query(`delete from letters where person_id = $personId`, { bind: { personId }, transaction });
+}

@@ -13,7 +13,7 @@ const OPEN: Prepared = {
   name: 'open-session',
   text: `select s.person_id as "personId", extract(epoch from now() - s.last_seen_at)::float8 as "seenS", m.cellar_id as "cellarId", m.role
      from sign_ins s left join memberships m on m.person_id = s.person_id
-     where s.id = $1 and s.ended_at is null and s.expires_at > now()
+     where s.id = $1 and s.ended_at is null and s.expires_at > now() and s.last_seen_at > now() - make_interval(secs => s.idle_s)
      order by m.created_at, m.cellar_id`,
 };
 

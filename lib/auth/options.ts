@@ -1,12 +1,14 @@
 import 'server-only';
-import type { NextAuthOptions } from 'next-auth';
+import type { NextAuthOptions, User } from 'next-auth';
 import Credentials from 'next-auth/providers/credentials';
-import { signInForm } from '../contracts/people';
+import type { z } from 'zod';
+import { linkSignInForm, signInForm } from '../contracts/people';
 import { authSecret, env } from '../config/env';
 import { ThrottledError } from '../errors';
 import { logFor } from '../log';
 import { openSession } from '@/db/queries/sessions';
-import { signIn, type SignInFrom } from '../services/people/sign-in';
+import { signIn, type SignInFrom, type SignInOutcome } from '../services/people/sign-in';
+import { signInByLink } from '../services/people/sign-in-by-link';
 import { endSignIn } from '../services/people/end-sign-in';
 import { nextAuthCookies } from './cookies';
 
@@ -26,6 +28,24 @@ declare module 'next-auth/jwt' {
 const COOKIE_MAX_AGE_S = 30 * 86_400;
 const log = logFor('auth');
 
+/** A code that cannot be one is a wrong code, not a wrong passphrase. */
+const refusedForm = (error: z.ZodError): SignInOutcome => (error.issues.every(({ path }) => path[0] === 'code') ? 'code-wrong' : 'refused');
+
+/** What next-auth makes a session of. It hands an error's message to the browser: only codes leave here. `lib/client/sign-in.ts` reads them. */
+async function userOf(attempt: () => Promise<SignInOutcome>): Promise<User | null> {
+  let outcome: SignInOutcome;
+  try {
+    outcome = await attempt();
+  } catch (error) {
+    if (error instanceof ThrottledError) throw new Error(`throttled:${error.retryAfterS}`);
+    log.error({ err: error }, 'sign-in could not be checked');
+    throw new Error('unavailable');
+  }
+  if (outcome === 'refused') return null;
+  if (typeof outcome === 'string') throw new Error(outcome);
+  return { id: outcome.personId, name: outcome.name, email: outcome.email, signInId: outcome.signInId };
+}
+
 /** The options for one request: whose browser it is decides the throttle and which earlier sign-in ends. */
 export function authOptions(from: SignInFrom): NextAuthOptions {
   return {
@@ -42,20 +62,22 @@ export function authOptions(from: SignInFrom): NextAuthOptions {
     providers: [
       Credentials({
         name: 'Password',
-        credentials: { email: { type: 'email' }, password: { type: 'password' }, stay: { type: 'text' } },
-        async authorize(credentials) {
-          const form = signInForm.safeParse(credentials);
-          if (!form.success) return null;
-          try {
-            const opened = await signIn(form.data, credentials?.stay === 'true', from, Date.now());
-            return opened && { id: opened.personId, name: opened.name, email: opened.email, signInId: opened.signInId };
-          } catch (error) {
-            // next-auth hands the message to the browser: only codes leave here. `lib/client/sign-in.ts` reads them.
-            if (error instanceof ThrottledError) throw new Error(`throttled:${error.retryAfterS}`);
-            log.error({ err: error }, 'sign-in could not be checked');
-            throw new Error('unavailable');
-          }
-        },
+        credentials: { email: { type: 'email' }, password: { type: 'password' }, code: { type: 'text' }, stay: { type: 'text' } },
+        authorize: (credentials) =>
+          userOf(async () => {
+            const form = signInForm.safeParse({ ...credentials, code: credentials?.code || undefined });
+            return form.success ? signIn(form.data, credentials?.stay === 'true', from, Date.now()) : refusedForm(form.error);
+          }),
+      }),
+      Credentials({
+        id: 'link',
+        name: 'A link by mail',
+        credentials: { token: { type: 'text' }, code: { type: 'text' } },
+        authorize: (credentials) =>
+          userOf(async () => {
+            const form = linkSignInForm.safeParse({ ...credentials, code: credentials?.code || undefined });
+            return form.success ? signInByLink(form.data, from, Date.now()) : refusedForm(form.error);
+          }),
       }),
     ],
     callbacks: {

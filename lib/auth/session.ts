@@ -1,15 +1,20 @@
 import 'server-only';
 import { decode } from 'next-auth/jwt';
 import { cookies } from 'next/headers';
+import { markTokenUsed, openToken, openTokenById, type OpenToken } from '@/db/queries/api-tokens';
 import { markSeen, openSession, type SessionRow } from '@/db/queries/sessions';
 import { authSecret } from '../config/env';
 import { logFor } from '../log';
+import { apiTokenOf, hashApiToken, lesserRole } from './api-tokens';
 import { cellarCookie, sessionCookie } from './cookies';
 import type { Actor } from './policies';
 
-/** Who is signed in, by which sign-in, and as whom they act. */
+/** Who asks, by which sign-in or token, and as whom they act. */
 export interface Session {
-  signInId: string;
+  /** Null: by a token. */
+  signInId: string | null;
+  /** Null: by a sign-in in a browser. */
+  token: { id: string; lastFour: string } | null;
   personId: string;
   /** Null: a person who belongs to no cellar. */
   actor: Actor | null;
@@ -43,12 +48,27 @@ export async function sessionOf(jar: CookieJar): Promise<Session | null> {
   const [first] = rows;
   if (!first) return null;
   if (first.seenS > SEEN_EVERY_S) markSeen(signInId, SEEN_EVERY_S).catch((error: unknown) => logFor('auth').warn({ error }, 'could not note when a person was last seen'));
-  return { signInId, personId: first.personId, actor: actorOf(rows, jar.get(cellarCookie())?.value) };
+  return { signInId, token: null, personId: first.personId, actor: actorOf(rows, jar.get(cellarCookie())?.value) };
 }
 
-/** Whether the sign-in is still open and the person still acts in that cellar in that role. */
-export async function holds(signInId: string, actor: Actor): Promise<boolean> {
-  const rows = await openSession(signInId);
+const actorOfToken = (row: OpenToken): Actor => ({ personId: row.personId, cellarId: row.cellarId, role: lesserRole(row.tokenRole, row.personRole) });
+
+/** The session behind an `Authorization: Bearer fbt_…` header, or null: revoked, expired, its person gone, or never made. */
+export async function sessionOfBearer(header: string): Promise<Session | null> {
+  const token = apiTokenOf(header);
+  const row = token && (await openToken(hashApiToken(token)));
+  if (!row) return null;
+  if (row.usedS === null || row.usedS > SEEN_EVERY_S) markTokenUsed(row.id, SEEN_EVERY_S).catch((error: unknown) => logFor('auth').warn({ error }, 'could not note when a token was last used'));
+  return { signInId: null, token: { id: row.id, lastFour: row.lastFour }, personId: row.personId, actor: actorOfToken(row) };
+}
+
+/** Whether the sign-in or token is still open and the person still acts in that cellar in that role. */
+export async function holds(session: Pick<Session, 'signInId' | 'token'>, actor: Actor): Promise<boolean> {
+  if (session.token) {
+    const row = await openTokenById(session.token.id);
+    return row !== null && actorOfToken(row).role === actor.role;
+  }
+  const rows = session.signInId === null ? [] : await openSession(session.signInId);
   return rows.some((row) => row.personId === actor.personId && row.cellarId === actor.cellarId && row.role === actor.role);
 }
 

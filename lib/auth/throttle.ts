@@ -17,16 +17,35 @@ export interface Tries {
 }
 
 /** Known and unknown accounts are counted alike, so that a lock tells nothing. */
-export function triesOf(email: string, address: string): Tries {
-  const account = key('account', email);
-  const from = key('address', address);
+export const triesOf = (email: string, address: string): Tries => tries(key('account', email), BY_ACCOUNT, key('address', address), BY_ADDRESS);
+
+/** Mails that somebody asks for, to one account: three, then a minute's pause that doubles. Nobody's mailbox is to be flooded. */
+const LINKS_BY_ACCOUNT: TryRule = { free: 3, firstWaitS: 60, mostWaitS: 3_600 };
+const LINKS_BY_ADDRESS: TryRule = { free: 20, firstWaitS: 60, mostWaitS: 3_600 };
+
+export const linkTriesOf = (email: string, address: string): Tries => tries(key('links', email), LINKS_BY_ACCOUNT, key('links-address', address), LINKS_BY_ADDRESS);
+
+/** Secrets of mailed links that somebody tries, from one address. They cannot be guessed; this keeps the noise down. */
+const SECRETS_BY_ADDRESS: TryRule = { free: 60, firstWaitS: 30, mostWaitS: 900 };
+
+export const secretTriesOf = (address: string): Tries => tries(null, null, key('secrets', address), SECRETS_BY_ADDRESS);
+
+/** The passphrase of somebody who is signed in, asked for again. */
+export const ownTriesOf = (personId: string, address: string): Tries => tries(key('own', personId), BY_ACCOUNT, key('address', address), BY_ADDRESS);
+
+/** Invitations that one person sends: twenty, then slower. */
+const INVITATIONS: TryRule = { free: 20, firstWaitS: 60, mostWaitS: 3_600 };
+
+export const invitationTriesOf = (personId: string): Tries => tries(key('invitations', personId), INVITATIONS, null, null);
+
+function tries(account: string | null, accountRule: TryRule | null, from: string | null, fromRule: TryRule | null): Tries {
   return {
     async begin() {
-      const wait = Math.max(await countTry(from, BY_ADDRESS), await countTry(account, BY_ACCOUNT));
+      const wait = Math.max(from && fromRule ? await countTry(from, fromRule) : 0, account && accountRule ? await countTry(account, accountRule) : 0);
       if (wait > 0) throw new ThrottledError(wait, `Too many tries. The next one counts in ${wait} s.`);
     },
     async right() {
-      await tryWasRight(account, from);
+      await tryWasRight(account ?? '', from ?? '');
       await forgetOldTries();
     },
   };

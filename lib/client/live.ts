@@ -43,6 +43,8 @@ export function touches(change: Pick<Change, 'kind' | 'batch'>): (path: string) 
       return (path) => isPath('/jobs')(path);
     case 'lot':
       return (path) => path.startsWith('/lots') || path.startsWith('/places') || isPath('/jobs')(path) || batch(path);
+    case 'member':
+      return (path) => path.startsWith('/members') || path.startsWith('/invitations') || isPath('/me')(path);
     case 'share':
       return (path) => path.startsWith('/shares') || batch(path);
   }
@@ -125,6 +127,8 @@ class LiveLine {
   /** The browser's own reconnection gives up on any HTTP error, so the line is opened anew here. */
   private lost() {
     this.close();
+    // A line that was cut may mean that the person no longer belongs here: /me says so.
+    void refresh(isPath('/me'));
     this.downSince ??= Date.now();
     const since = this.downSince;
     this.timers.shown ??= setTimeout(() => this.set({ state: 'offline', offlineSince: since }), SHOWN_AFTER_MS);

@@ -2,19 +2,28 @@
 
 import { signIn, signOut as endSession } from 'next-auth/react';
 
-export type SignInResult = { ok: true } | { ok: false; reason: 'wrong' | 'throttled' | 'unavailable'; retryAfterS: number | null };
+/** `code-needed` and `code-wrong`: the first factor was right, and the account has a second one. */
+export type SignInReason = 'wrong' | 'code-needed' | 'code-wrong' | 'throttled' | 'unavailable';
+export type SignInResult = { ok: true } | { ok: false; reason: SignInReason; retryAfterS: number | null };
 
 /** The codes that the sign-in answers with, from `lib/auth/options.ts`. */
 const THROTTLED = /^throttled:(\d+)$/;
 
-/** Signs in with a mail address and a password; `stay` keeps it for 30 days, else 12 hours. */
-export async function signInWithPassword(form: { email: string; password: string; stay: boolean }): Promise<SignInResult> {
-  const answer = await signIn('credentials', { ...form, stay: String(form.stay), redirect: false }).catch(() => undefined);
+async function attempt(provider: 'credentials' | 'link', form: Record<string, string>): Promise<SignInResult> {
+  const answer = await signIn(provider, { ...form, redirect: false }).catch(() => undefined);
   if (answer?.ok) return { ok: true };
-  const throttled = THROTTLED.exec(answer?.error ?? '');
+  const error = answer?.error ?? '';
+  const throttled = THROTTLED.exec(error);
   if (throttled) return { ok: false, reason: 'throttled', retryAfterS: Number(throttled[1]) };
-  return { ok: false, reason: answer?.error === 'CredentialsSignin' ? 'wrong' : 'unavailable', retryAfterS: null };
+  if (error === 'code-needed' || error === 'code-wrong') return { ok: false, reason: error, retryAfterS: null };
+  return { ok: false, reason: error === 'CredentialsSignin' ? 'wrong' : 'unavailable', retryAfterS: null };
 }
+
+/** Signs in with a mail address and a passphrase; `stay` keeps it for 30 days, else 12 hours. */
+export const signInWithPassword = ({ stay, code = '', ...form }: { email: string; password: string; stay: boolean; code?: string }) => attempt('credentials', { ...form, code, stay: String(stay) });
+
+/** Signs in by the secret of a mailed link, which is used up by it. */
+export const signInByLink = (token: string, code = '') => attempt('link', { token, code });
 
 /** Ends this sign-in and goes to the sign-in page. */
 export const signOut = () => endSession({ callbackUrl: '/sign-in' });

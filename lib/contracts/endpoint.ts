@@ -14,6 +14,8 @@ export interface Endpoint {
   path: string;
   summary: string;
   access: Access;
+  /** `session`: from a browser that is signed in, never with a token. So is every endpoint whose access is `person`. */
+  by?: 'session';
   params?: z.ZodObject;
   query?: z.ZodType;
   body?: z.ZodType;

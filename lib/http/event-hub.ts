@@ -1,14 +1,14 @@
 import 'server-only';
 import { may, type Actor } from '../auth/policies';
-import { holds } from '../auth/session';
-import type { Change } from '../contracts/events';
+import { holds, type Session } from '../auth/session';
+import { EVERY_CELLAR, type Change } from '../contracts/events';
 import { logFor } from '../log';
 import { hearChanges } from '../services/changes';
 import { databaseIsAway } from './problem';
 
 /** So that a line through proxies stays open, and a browser sees that it is dead. */
 const BEAT_MS = 15_000;
-/** How long a person whose sign-in or membership has ended may still hear that something changed. */
+/** Should the word that a sign-in or membership has ended be lost, its stream ends within this. */
 const RECHECK_MS = 30_000;
 /** A reader that has not taken this many messages is gone or hostile. */
 const MOST_BEHIND = 256;
@@ -19,7 +19,7 @@ const encoder = new TextEncoder();
 
 interface Stream {
   actor: Actor;
-  signInId: string;
+  session: Pick<Session, 'signInId' | 'token'>;
   controller: ReadableStreamDefaultController<Uint8Array>;
 }
 
@@ -32,12 +32,12 @@ class EventHub {
   private stopping = false;
 
   /** A stream of one cellar's changes, open until the client goes, may no longer listen, or the server stops. */
-  open(actor: Actor, signInId: string, gone: AbortSignal): ReadableStream<Uint8Array> {
+  open(actor: Actor, session: Stream['session'], gone: AbortSignal): ReadableStream<Uint8Array> {
     let stream: Stream | undefined;
     return new ReadableStream<Uint8Array>(
       {
         start: (controller) => {
-          stream = { actor, signInId, controller };
+          stream = { actor, session, controller };
           controller.enqueue(encoder.encode(`retry: ${RECONNECT_MS}\nevent: beat\ndata:\n\n`));
           if (this.stopping) return controller.close();
           this.streams.add(stream);
@@ -64,7 +64,7 @@ class EventHub {
   /** Begins to hear, before the first page asks: what is said while nobody listens is lost. */
   begin(): void {
     this.line ??= hearChanges({
-      onChange: (change) => this.tell(change),
+      onChange: (change) => void this.heard(change),
       onError: (error) => log.warn({ err: error }, 'trouble on the line to the database'),
       onConnect: () => this.connected(),
     });
@@ -77,7 +77,13 @@ class EventHub {
     for (const stream of [...this.streams]) this.drop(stream);
   }
 
-  private tell(change: Change): void {
+  /** Who may no longer listen is gone before anything more is told. */
+  private async heard(change: Change): Promise<void> {
+    if (change.kind === 'member') await this.recheck((stream) => change.person === undefined || stream.actor.personId === change.person);
+    if (change.cellar !== EVERY_CELLAR) this.tell(change);
+  }
+
+  private tell({ person: _, ...change }: Change): void {
     const message = `event: change\ndata: ${JSON.stringify(change)}\n\n`;
     this.send((stream) => (stream.actor.cellarId === change.cellar && (change.kind !== 'alert' || may(stream.actor.role, 'alerts.read')) ? message : null));
   }
@@ -92,9 +98,9 @@ class EventHub {
   }
 
   /** Ends the streams whose sign-in or membership has ended; a database that does not answer ends none. */
-  private async recheck(): Promise<void> {
+  private async recheck(which: (stream: Stream) => boolean = () => true): Promise<void> {
     try {
-      for (const stream of [...this.streams]) if (!(await holds(stream.signInId, stream.actor))) this.drop(stream);
+      for (const stream of [...this.streams].filter(which)) if (!(await holds(stream.session, stream.actor))) this.drop(stream);
     } catch (error) {
       if (!databaseIsAway(error)) log.error({ err: error }, 'could not check a sign-in');
     }

@@ -3,13 +3,16 @@ import type { NextRequest } from 'next/server';
 import { z } from 'zod';
 import { authorize } from '../auth/authorize';
 import type { Actor } from '../auth/policies';
-import { sessionOf, type Session } from '../auth/session';
+import { sessionOf, sessionOfBearer, type Session } from '../auth/session';
 import type { Endpoint } from '../contracts/endpoints';
 import { ForbiddenError, InvalidError, NotFoundError, UnauthenticatedError, UnavailableError, type FieldErrors } from '../errors';
+import { withOrigin } from '../origin';
+import { addressOf } from './address';
 import { readJson } from './body';
 import { metrics } from './metrics';
 import { problemOf } from './problem';
 import { requireSameSite } from './same-site';
+import { countWrongToken } from './wrong-tokens';
 
 type Parsed<S> = S extends z.ZodType ? z.output<S> : undefined;
 /** Where there is no schema: nothing, or a file that the route made itself. */
@@ -18,8 +21,8 @@ type Part<E extends Endpoint, K extends 'params' | 'query' | 'body'> = E extends
 
 export interface RouteContext<E extends Endpoint> {
   request: NextRequest;
-  /** Absent only where anyone may call. */
-  session: E['access'] extends 'anyone' ? null : Session;
+  /** Absent only where anyone may call; what a person does for themself is never done by a token. */
+  session: E['access'] extends 'anyone' ? null : E['access'] extends 'person' ? Session & { signInId: string } : Session;
   /** Null where it is enough to be signed in, or not even that. */
   actor: E['access'] extends 'person' | 'anyone' ? null : Actor;
   params: Part<E, 'params'>;
@@ -59,7 +62,7 @@ async function answer<E extends Endpoint>(endpoint: E, handle: (context: RouteCo
     headers,
     // The conditional types of the context follow the endpoint's literal; the checks above make them hold.
   } as RouteContext<E>;
-  const result = await handle(context);
+  const result = await withOrigin(originOf(request, session), () => handle(context));
   if (result instanceof Response) return result;
   if (endpoint.response === null) return new Response(null, { status: endpoint.status, headers });
   return Response.json(endpoint.response.parse(result), { status: endpoint.status, headers });
@@ -70,14 +73,35 @@ export async function admit(endpoint: Endpoint, request: NextRequest): Promise<{
   const { access } = endpoint;
   if (access === 'anyone') return { session: null, actor: null };
   if (access === 'sensor') throw new Error('A sensor’s route checks its own credential.');
-  if (endpoint.method !== 'GET') requireSameSite(request);
-  const session = await sessionOf(request.cookies);
-  if (!session) throw new UnauthenticatedError();
+  const session = await sessionFor(endpoint, request);
   if (access === 'person') return { session, actor: null };
   if (!session.actor) throw new ForbiddenError('You do not belong to a cellar. Ask its keeper to invite you.');
   if (access !== 'member') authorize(session.actor, access);
   return { session, actor: session.actor };
 }
+
+/**
+ * Whose request it is. A program shows a token, and its cookies count for nothing;
+ * only what a browser sends along by itself has to come from our own pages.
+ */
+async function sessionFor(endpoint: Endpoint, request: NextRequest): Promise<Session> {
+  const header = request.headers.get('authorization');
+  if (header === null) {
+    if (endpoint.method !== 'GET') requireSameSite(request);
+    const session = await sessionOf(request.cookies);
+    if (!session) throw new UnauthenticatedError();
+    return session;
+  }
+  const session = await sessionOfBearer(header);
+  if (!session) {
+    await countWrongToken(addressOf(request));
+    throw new UnauthenticatedError('This token is not valid: revoked, expired, or never made.');
+  }
+  if (endpoint.access === 'person' || endpoint.by === 'session') throw new ForbiddenError('This is done in the browser by the person, not with a token.');
+  return session;
+}
+
+const originOf = (request: NextRequest, session: Session | null) => ({ address: addressOf(request), means: session?.token ? `token …${session.token.lastFour}` : session ? 'session' : 'open' });
 
 /** A query as an object; a name given twice stays a list, which no schema here takes. */
 function queryOf(request: NextRequest): Record<string, string | string[]> {

@@ -16,7 +16,7 @@ export function streamRoute(endpoint: Endpoint) {
     try {
       const { session, actor } = await admit(endpoint, request);
       if (!session || !actor) throw new UnauthenticatedError();
-      return new Response(eventHub().open(actor, session.signInId, request.signal), {
+      return new Response(eventHub().open(actor, session, request.signal), {
         headers: { 'content-type': 'text/event-stream; charset=utf-8', 'cache-control': 'no-cache, no-transform', 'x-accel-buffering': 'no' },
       });
     } catch (error) {
