@@ -3,6 +3,7 @@
 import Link from 'next/link';
 import { useEffect, useRef, useState } from 'react';
 import { rulerOf } from '@/components/batch/evidence';
+import { BatchMute } from '@/components/messages/BatchMute';
 import { Button } from '@/components/ui/Button';
 import { Choice } from '@/components/ui/Choice';
 import { TextField } from '@/components/ui/Field';
@@ -151,6 +152,7 @@ export function AlertDetail({ alert, now, timeZone, mayTake, mayClear, taking, o
           </p>
         )}
       </Part>
+      {alert.state !== 'resolved' && <BatchMute batch={alert.batch} now={now} timeZone={timeZone} />}
       {alert.state !== 'resolved' && (mayTake || mayClear) && <TakeForm key={alert.id} alert={alert} now={now} timeZone={timeZone} mayTake={mayTake} mayClear={mayClear} taking={taking} />}
       <Link href={`/batches/${alert.batch.id}`} className="type-label min-h-8 text-ink underline decoration-rule2 underline-offset-4">
         To {alert.batch.name}, its curve and its log

@@ -15,6 +15,7 @@ export interface Section {
 export const SECTIONS: readonly Section[] = [
   { href: '/settings/security', name: 'Sign-in', says: 'passphrase, mail address, second factor, where you are signed in', of: 'You' },
   { href: '/settings/people', name: 'People', says: 'who shares it, in which role, who is invited', of: 'The cellar', needs: 'members.read' },
+  { href: '/settings/messages', name: 'Messages', says: 'what you hear of, when, and by which means; who is told next', of: 'You', needs: 'alerts.read' },
 ];
 
 export const sectionsFor = (may: (action: Action) => boolean): Section[] => SECTIONS.filter(({ needs }) => needs === undefined || may(needs));

@@ -2,6 +2,7 @@
 
 import Link from 'next/link';
 import type { Span } from '@/components/charts/picture';
+import { LaneMuted } from '@/components/messages/BatchMute';
 import type { PageLayout } from '@/components/ui/layout';
 import { Sentence } from '@/components/ui/Sentence';
 import { State } from '@/components/ui/StateMark';
@@ -119,6 +120,7 @@ export function PhoneLane({ view, span, now, timeZone, staleAt, mayTake }: LaneP
                   <State state={attention.state} />
                 </span>
                 {view.when}
+                <LaneMuted batchId={lane.id} />
               </span>
               <span className="type-label whitespace-nowrap text-ink2">{staleAt === null ? dayOf(lane.pitched_at, now, timeZone) : figures.under}</span>
             </div>

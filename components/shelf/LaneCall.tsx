@@ -1,6 +1,7 @@
 'use client';
 
 import { useState } from 'react';
+import { LaneMuted } from '@/components/messages/BatchMute';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Sentence } from '@/components/ui/Sentence';
 import { State } from '@/components/ui/StateMark';
@@ -58,6 +59,7 @@ export function LaneCall({ view, mayTake }: { view: LaneView; mayTake: boolean }
         <span aria-hidden className="leading-none">
           <State state={attention.state} />
         </span>
+        <LaneMuted batchId={view.lane.id} />
         <span className="type-label text-right text-ink2">{view.when}</span>
       </div>
       {low ? (

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { LONGEST_SPAN_MIN, RULE_NAMES } from '../core/alerts/rules';
 import { MEANS } from '../core/alerts/telling';
+import { CALL_NAMES } from '../core/types';
 import { ALERT_LEVELS, ALERT_STATES } from './alerts';
 import { id, timestamp } from './common';
 
@@ -97,6 +98,7 @@ export const deviceSchema = z.object({ id });
 export const takePage = z.object({
   person: z.string(),
   batch: z.object({ id, name: z.string(), tag: z.number().nullable() }),
+  call: z.enum(CALL_NAMES),
   level: z.enum(ALERT_LEVELS),
   kind: z.string().nullable(),
   headline: z.string(),

@@ -45,6 +45,7 @@ export async function openTakeLink(token: string, { clock = systemClock }: { clo
   return {
     person: link!.personName,
     batch: { id: batch.id, name: batch.name, tag: batch.tag },
+    call: alert.call,
     level: alert.level,
     kind: alert.kind,
     headline: evidence.headline,
