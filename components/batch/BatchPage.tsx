@@ -5,6 +5,7 @@ import { pictureOf } from '@/components/charts/from-wire';
 import { wholeSpan, type Span } from '@/components/charts/picture';
 import { isWhole, within } from '@/components/charts/zoom';
 import { clock, when } from '@/components/charts/zone';
+import { MuteBar } from '@/components/messages/BatchMute';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Haze } from '@/components/ui/Haze';
 import { usePageLayout } from '@/components/ui/layout';
@@ -24,11 +25,14 @@ import { EntryForm } from './EntryForm';
 import type { EntryDraft, EntryKind } from './entry-form';
 import { Evidence } from './Evidence';
 import { factsOf, type LastReading } from './facts';
-import { litres } from './figures';
+import { gravityText, litres } from './figures';
 import { Log } from './Log';
 import { logRows } from './log';
+import { OtherCurves } from './OtherCurves';
 import { SetupForm } from './SetupForm';
 import { Sheet } from './Sheet';
+import { usePlays } from './use-plays';
+import { WhatIf } from './WhatIf';
 import { dayOf, STAGE_WORDS } from './words';
 
 /** Points asked for: about one for every two pixels of the chart. */
@@ -101,9 +105,12 @@ function Loaded({ batch }: { batch: BatchBody }) {
 
   const judged = judgement ?? batch.assessment;
   const shown = useMemo(() => ({ ...batch, assessment: judged }), [batch, judged]);
+  const footing = judgement?.footing ?? null;
+  const plays = usePlays(batch, footing, now, timeZone);
+  const { laid } = plays;
   const picture = useMemo(
-    () => pictureOf({ batch: shown, series: series.series, drawn: judgement, entries: entries ?? [] }, now, timeZone),
-    [shown, series.series, judgement, entries, now, timeZone],
+    () => ({ ...pictureOf({ batch: shown, series: series.series, drawn: judgement, entries: entries ?? [] }, now, timeZone), laid }),
+    [shown, series.series, judgement, entries, now, timeZone, laid],
   );
   const whole = useMemo(() => wholeSpan(picture, batch.pitched_at === null ? null : Date.parse(batch.pitched_at) / 1000), [picture, batch.pitched_at]);
   const span = chosen ? within(chosen, whole) : whole;
@@ -140,9 +147,13 @@ function Loaded({ batch }: { batch: BatchBody }) {
       <BatchHead batch={batch} vessel={vessel} facts={facts} actions={actions} />
       {first && <Decision row={first} vessel={vessel} when={whenOf(first, judged, now, timeZone)} done={working ? doneAct(first, batch, open, may('entries.alter')) : null} onRead={onRead} mayTake={may('alerts.acknowledge')} />}
       <PhoneFacts facts={facts} work={actions.work} />
+      {working && <MuteBar batch={batch} now={now} timeZone={timeZone} />}
       <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px] wide:grid-rows-[auto_1fr]">
         <div className="wide:col-start-1 wide:row-start-1">
-          <Evidence name={batch.name} picture={picture} span={span} whole={whole} onSpan={(next) => setChosen(isWhole(next, whole) ? null : next)} timeZone={timeZone} phone={phone} arriving={series.loading} trouble={trouble ? `${trouble.what} did not arrive (${trouble.error?.status ? `error ${trouble.error.status}` : 'no answer'}). Shown is what was known before.` : null} onRetry={retryAll} />
+          <Evidence name={batch.name} picture={picture} span={span} whole={whole} onSpan={(next) => setChosen(isWhole(next, whole) ? null : next)} timeZone={timeZone} phone={phone} arriving={series.loading} trouble={trouble ? `${trouble.what} did not arrive (${trouble.error?.status ? `error ${trouble.error.status}` : 'no answer'}). Shown is what was known before.` : null} onRetry={retryAll} plays={footing ? plays : null}>
+            {footing && plays.open === 'what-if' && <WhatIf draft={plays.draft} played={plays.played} present={{ gravity: gravityText(1 + footing.finalGravity.value / 1000), temperature: footing.temperatureC?.toFixed(1) ?? '20' }} onChange={plays.setDraft} onClose={plays.close} />}
+            {footing && plays.open === 'curve' && <OtherCurves chosen={plays.curve} words={plays.curveWords} onChoose={plays.setCurve} onClose={plays.close} />}
+          </Evidence>
         </div>
         <div className="wide:col-start-2 wide:row-span-2 wide:row-start-1 wide:border-l">
           {judged ? (

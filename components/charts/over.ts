@@ -146,6 +146,8 @@ export const likelyEnd: Mark = (view) => {
   context.fillStyle = palette.ink;
   context.fillRect(from, bedY - 2.5, Math.max(5, to - from), 5);
   context.restore();
+  // Where something else is played with, its own end is what is looked at.
+  if (picture.laid?.some((laid) => laid.end)) return;
   const words = page ? `bed on ${picture.likelyEnd.words}` : `${(picture.bed?.value ?? 0).toFixed(3)} · ${picture.likelyEnd.words}`;
   context.textAlign = 'right';
   if (page) {

@@ -33,6 +33,15 @@ export interface Bracket {
   kind: 'flat' | 'equal';
 }
 
+/** A curve laid over the evidence that is no part of it. */
+export interface Laid {
+  points: readonly { at: number; gravity: number }[];
+  /** Its name, in a dashed frame: `what if, not real`. */
+  words: string;
+  /** The likely days of its end, where it foresees one. */
+  end: { lo: number; hi: number; gravity: number } | null;
+}
+
 export interface Picture {
   now: number;
   /** Parallel columns, ascending in time. */
@@ -58,6 +67,7 @@ export interface Picture {
   airlockHolds: number | null;
   /** The keeper's choice: a name of DRINK_COLOURS or `#rrggbb`. */
   drink: string;
+  laid?: readonly Laid[] | undefined;
 }
 
 /** The instant up to which the curve is known rather than foreseen. */
@@ -104,7 +114,8 @@ export function wholeSpan(picture: Picture, pitchedAt: number | null): Span {
   const start = starts.length > 0 ? Math.min(...starts, picture.now) : picture.now - DAY;
   const past = Math.max(picture.now - start, DAY);
   const foreseen = Math.min((picture.curve.at(-1)?.at ?? 0) - picture.now, 6 * DAY);
-  const wanted = picture.likelyEnd ? Math.max(picture.likelyEnd.hi - picture.now + DAY, foreseen) : foreseen;
+  const ends = [picture.likelyEnd?.hi, ...(picture.laid ?? []).map((laid) => laid.end?.hi)].filter((end) => end !== undefined);
+  const wanted = Math.max(foreseen, ...ends.map((end) => end - picture.now + DAY));
   // Room right of now for its figures, however long the past.
   const ahead = Math.max(3 * DAY, past * 0.16, Math.min(wanted, past, 21 * DAY));
   return { from: start - (past + ahead) * 0.025, to: picture.now + ahead };

@@ -63,7 +63,8 @@ function ceilingOf(readings: readonly number[]): number {
 /** Floor and ceiling of the fall: the bed and the original gravity, widened by what lies outside them. */
 function gravitySpan(picture: Picture, page: boolean): { min: number; max: number } {
   const readings = known(picture.readings.gravity);
-  const marked = known([...picture.rings.map((ring) => ring.gravity), ...picture.curve.map((point) => (page ? point.hi : point.gravity))]);
+  const laid = (picture.laid ?? []).flatMap((one) => one.points.map((point) => point.gravity));
+  const marked = known([...picture.rings.map((ring) => ring.gravity), ...picture.curve.map((point) => (page ? point.hi : point.gravity)), ...laid]);
   const seen = [...readings, ...marked];
   const top = Math.max(ceilingOf(readings), ...marked, picture.originalGravity ?? -Infinity, (picture.bed?.value ?? -Infinity) + 10 * POINT);
   const lowest = Math.min(...seen, picture.originalGravity ?? Infinity);

@@ -198,7 +198,9 @@ function told({ footing, vessel, pace, volumeL, effectiveOg, level }: Scene, { c
     if (value > most.value) most = { value, at: at(ahead) };
     if (value >= limit) over = ahead;
   }
-  const interval = hours === null ? null : hoursInterval(hours, Math.min(0.99, footing.done));
+  // A new stretch is known as well as its share of the whole fall allows, not as well as the old one was.
+  const done = effectiveOg === footing.effectiveOg ? footing.done : Math.min(0.99, Math.max(0, (effectiveOg - level) / Math.max(1, effectiveOg - fg)));
+  const interval = hours === null ? null : hoursInterval(hours, done);
   return {
     curve: points,
     volumeL,
