@@ -2,6 +2,7 @@
 
 import { useState } from 'react';
 import { Button } from '@/components/ui/Button';
+import type { SensorKindName } from '@/lib/contracts/sensors';
 import { readingsTopic } from '@/lib/contracts/topics';
 
 /** Where sensors reach this house. */
@@ -40,15 +41,15 @@ export function CopyLine({ label, text }: { label: string; text: string }) {
   );
 }
 
-const EXAMPLE = '{"gravity":1.048,"temperature":19.2}';
+const EXAMPLE = { float: '{"gravity":1.048,"temperature":19.2}', room: '{"temperature":14.5}', foam: '{"foam":32,"temperature":19.2}' } as const;
 
 /** Lines that send one reading, ready to run. Without the secret its place is named. */
-export function ConnectLines({ sensor, secret, doors }: { sensor: string; secret: string | null; doors: Doors }) {
+export function ConnectLines({ sensor, secret, doors, kind = 'float' }: { sensor: string; secret: string | null; doors: Doors; kind?: SensorKindName }) {
   const key = secret ?? 'SECRET';
   return (
     <div className="flex flex-col gap-4">
-      <CopyLine label="over MQTT, one reading" text={`mosquitto_pub -h ${doors.mqttHost} -p ${doors.mqttPort} -q 1 -i ${sensor} -u ${sensor} -P '${key}' -t ${readingsTopic(sensor)} -m '${EXAMPLE}'`} />
-      <CopyLine label="over HTTP, one reading" text={`curl -X POST ${doors.httpUrl}/api/v1/telemetry -H 'Authorization: Bearer ${sensor}:${key}' -H 'Content-Type: application/json' -d '${EXAMPLE}'`} />
+      <CopyLine label="over MQTT, one reading" text={`mosquitto_pub -h ${doors.mqttHost} -p ${doors.mqttPort} -q 1 -i ${sensor} -u ${sensor} -P '${key}' -t ${readingsTopic(sensor)} -m '${EXAMPLE[kind]}'`} />
+      <CopyLine label="over HTTP, one reading" text={`curl -X POST ${doors.httpUrl}/api/v1/telemetry -H 'Authorization: Bearer ${sensor}:${key}' -H 'Content-Type: application/json' -d '${EXAMPLE[kind]}'`} />
     </div>
   );
 }

@@ -4,12 +4,13 @@ import Link from 'next/link';
 import { useState } from 'react';
 import { dayName } from '@/components/charts/zone';
 import { Button } from '@/components/ui/Button';
-import { Select } from '@/components/ui/Field';
+import { Field, Select } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
 import type { SensorBody, UpdateSensor } from '@/lib/contracts/sensors';
 import { useBatches } from '@/lib/client/batches';
 import { ClientError } from '@/lib/client/fetcher';
 import { updateSensor } from '@/lib/client/sensors';
+import { fromLocalInput, toLocalInput } from './numbers';
 
 /** One change of a sensor, with what is said while it runs and when it fails. */
 export function useSensorChange(id: string) {
@@ -32,12 +33,19 @@ export function useSensorChange(id: string) {
 }
 
 /** Which vessel it floats in: put in, moved, taken out. */
-export function Placement({ sensor, mayAssign, timeZone }: { sensor: SensorBody; mayAssign: boolean; timeZone: string }) {
+export function Placement({ sensor, mayAssign, timeZone, now }: { sensor: SensorBody; mayAssign: boolean; timeZone: string; now: number }) {
   const { batches } = useBatches({ state: 'working' });
   const { busy, failed, change } = useSensorChange(sensor.id);
   const [chosen, setChosen] = useState('');
+  const [since, setSince] = useState('');
+  const at = () => (since === '' ? {} : { since: fromLocalInput(since, timeZone) ?? undefined });
+  const done = (changed: boolean) => {
+    if (!changed) return;
+    setChosen('');
+    setSince('');
+  };
   const others = (batches ?? []).filter((batch) => batch.id !== sensor.batch?.id);
-  const taken = others.find((batch) => batch.id === chosen)?.sensor;
+  const taken = sensor.kind === 'float' ? others.find((batch) => batch.id === chosen)?.sensor : undefined;
   return (
     <section aria-label="In which vessel" className="flex flex-col gap-3 border-b px-(--margin) py-4">
       <p className="type-body">
@@ -61,7 +69,7 @@ export function Placement({ sensor, mayAssign, timeZone }: { sensor: SensorBody;
             value={chosen}
             onChange={(event) => setChosen(event.target.value)}
             className="min-w-48 flex-1"
-            hint={taken ? `${taken.name} is in it now` : undefined}
+            hint={taken ? `${taken.name} is in it now` : sensor.kind === 'float' ? 'one float a batch' : 'stands beside the float'}
           >
             <option value="">choose a batch</option>
             {others.map((batch) => (
@@ -71,11 +79,12 @@ export function Placement({ sensor, mayAssign, timeZone }: { sensor: SensorBody;
               </option>
             ))}
           </Select>
-          <Button disabled={busy || chosen === ''} onClick={() => void change({ batch_id: chosen }).then((done) => done && setChosen(''))} className={taken ? 'mb-[22px]' : ''}>
+          <Field label="since" type="datetime-local" value={since} max={now > 0 ? toLocalInput(now * 1000, timeZone) : undefined} onChange={(event) => setSince(event.target.value)} hint="left empty: now" className="w-52" />
+          <Button disabled={busy || chosen === ''} onClick={() => void change({ batch_id: chosen, ...at() }).then(done)} className="mb-[22px]">
             {sensor.batch ? 'Move it' : 'Put it in'}
           </Button>
           {sensor.batch && (
-            <Button look="quiet" disabled={busy} onClick={() => void change({ batch_id: null })} className={taken ? 'mb-[22px]' : ''}>
+            <Button look="quiet" disabled={busy} onClick={() => void change({ batch_id: null, ...at() }).then(done)} className="mb-[22px]">
               Take it out
             </Button>
           )}

@@ -1,44 +1,27 @@
 'use client';
 
 import { useState } from 'react';
-import { dayName } from '@/components/charts/zone';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Haze } from '@/components/ui/Haze';
 import { ErrorState, FormError } from '@/components/ui/Notice';
 import { useNow } from '@/components/ui/now';
 import { GroupBar, PageHead } from '@/components/ui/Page';
 import { State } from '@/components/ui/StateMark';
-import type { SensorBody } from '@/lib/contracts/sensors';
+import type { CreatedSensorBody, SensorBody } from '@/lib/contracts/sensors';
 import { useMe } from '@/lib/client/me';
 import { useSensor } from '@/lib/client/sensors';
+import { Calibration } from './Calibration';
 import { ConnectLines, type Doors } from './ConnectLines';
+import { Credential } from './Credential';
+import { Health, RefusedReasons } from './Health';
 import { Naming } from './Naming';
 import { Placement, useSensorChange } from './Placement';
+import { ProbeReadings } from './ProbeReadings';
 import { Refusals } from './Refusals';
-import { cellWords, everyWords, gravityWords, heardWords, linkWords, sensorState, temperatureWords } from './words';
-
-function Facts({ sensor, now, timeZone }: { sensor: SensorBody; now: number; timeZone: string }) {
-  const facts = [
-    { name: 'last heard', value: heardWords(sensor, now, timeZone) },
-    { name: 'speaks every', value: everyWords(sensor.interval_s) },
-    { name: 'gravity', value: gravityWords(sensor.last?.gravity) },
-    { name: 'temperature', value: temperatureWords(sensor.last?.temperature) },
-    { name: 'cell', value: cellWords(sensor.last?.battery) },
-    { name: 'link', value: linkWords(sensor.last?.signal) },
-    { name: 'refused in 24 h', value: String(sensor.refused_24h) },
-    { name: 'added', value: dayName(Date.parse(sensor.created_at) / 1000, timeZone) },
-  ];
-  return (
-    <dl className="grid grid-cols-2 border-b strip:grid-cols-4">
-      {facts.map((fact) => (
-        <div key={fact.name} className="border-b border-rule px-(--margin) py-2 [&:nth-last-child(-n+2)]:border-b-0 strip:[&:nth-last-child(-n+4)]:border-b-0">
-          <dt className="type-label text-ink2">{fact.name}</dt>
-          <dd className="font-mono text-[0.9375rem]/[1.25rem] font-semibold">{fact.value}</dd>
-        </div>
-      ))}
-    </dl>
-  );
-}
+import { SecretShown } from './SecretShown';
+import { Speaks } from './Speaks';
+import { Stays } from './Stays';
+import { KIND_WORDS, sensorState } from './words';
 
 /** Off: its credential no longer opens anything. Asked twice, since a sensor at work falls silent. */
 function OnOff({ sensor }: { sensor: SensorBody }) {
@@ -70,6 +53,7 @@ function OnOff({ sensor }: { sensor: SensorBody }) {
 export function SensorPage({ id, doors }: { id: string; doors: Doors }) {
   const { me, may } = useMe();
   const { sensor, error, loading, retry } = useSensor(id);
+  const [renewed, setRenewed] = useState<{ sensor: CreatedSensorBody; at: number } | null>(null);
   const nowMs = useNow();
   const now = (nowMs ?? 0) / 1000;
   const timeZone = me?.cellar.time_zone ?? 'UTC';
@@ -92,6 +76,7 @@ export function SensorPage({ id, doors }: { id: string; doors: Doors }) {
       </ErrorState>
     );
   }
+  if (renewed) return <SecretShown sensor={renewed.sensor} doors={doors} since={renewed.at} onDone={() => setRenewed(null)} />;
   const { state, word } = sensorState(sensor, now);
   return (
     <>
@@ -101,30 +86,39 @@ export function SensorPage({ id, doors }: { id: string; doors: Doors }) {
         meta={
           <span className="flex flex-wrap items-center gap-x-4">
             <State state={state} word={word} />
-            {sensor.id}
+            <span>{KIND_WORDS[sensor.kind].name.toLowerCase()}</span>
+            <span className="break-all">{sensor.id}</span>
           </span>
         }
       >
         {may('sensors.manage') && <OnOff sensor={sensor} />}
       </PageHead>
-      <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px]">
-        <div className="min-w-0">
-          <Facts sensor={sensor} now={now} timeZone={timeZone} />
+      <div className="flex flex-col wide:grid wide:grid-cols-[minmax(0,1fr)_424px]">
+        <div className="min-w-0 max-wide:order-2">
+          {sensor.kind === 'float' ? <Calibration sensor={sensor} mayChange={may('sensors.calibrate')} now={now} timeZone={timeZone} /> : <ProbeReadings sensor={sensor} now={now} timeZone={timeZone} />}
+          <Stays id={id} timeZone={timeZone} />
+          <RefusedReasons id={id} />
           <Refusals sensorId={id} now={now} timeZone={timeZone} />
         </div>
-        <div className="wide:border-l">
+        <div className="max-wide:order-1 wide:border-l">
+          <GroupBar word="Health" />
+          <Health sensor={sensor} now={now} timeZone={timeZone} />
           <GroupBar word="Vessel" />
-          <Placement sensor={sensor} mayAssign={may('sensors.assign')} timeZone={timeZone} />
+          <Placement sensor={sensor} mayAssign={may('sensors.assign')} timeZone={timeZone} now={now} />
           {may('sensors.manage') && (
             <>
+              <GroupBar word="Settings sent down" />
+              <Speaks sensor={sensor} now={now} timeZone={timeZone} />
               <GroupBar word="Name" />
               <Naming sensor={sensor} />
+              <GroupBar word="Credential" />
+              <Credential sensor={sensor} onNewSecret={(made) => setRenewed({ sensor: made, at: nowMs ?? 0 })} />
             </>
           )}
           <GroupBar word="How it reaches this house" />
           <div className="px-(--margin) py-4">
-            <p className="type-body pb-4 text-ink2">Its secret was shown when it was added and is not kept; put it where the lines say SECRET.</p>
-            <ConnectLines sensor={sensor.id} secret={null} doors={doors} />
+            <p className="type-body pb-4 text-ink2">Its secret was shown once and is not kept; put it where the lines say SECRET.</p>
+            <ConnectLines sensor={sensor.id} secret={null} doors={doors} kind={sensor.kind} />
           </div>
         </div>
       </div>

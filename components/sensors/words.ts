@@ -1,5 +1,5 @@
 import { duration, when } from '@/components/charts/zone';
-import type { SensorBody } from '@/lib/contracts/sensors';
+import type { SensorBody, SensorKindName } from '@/lib/contracts/sensors';
 import type { StateWord } from '@/lib/core/calls/attention';
 
 const HOUR = 3_600;
@@ -39,3 +39,15 @@ export const gravityWords = (gravity: number | null | undefined) => (typeof grav
 export const temperatureWords = (celsius: number | null | undefined) => (typeof celsius === 'number' ? `${celsius.toFixed(1).replace('-', '−')} °C` : '–');
 
 export const everyWords = (seconds: number) => (seconds < 60 ? `${seconds} s` : duration(seconds));
+
+export const KIND_WORDS: Record<SensorKindName, { name: string; says: string }> = {
+  float: { name: 'Float', says: 'Floats in the drink; tells gravity, or the angle it leans at, and temperature.' },
+  room: { name: 'Room', says: 'Hangs in the room; tells its temperature.' },
+  foam: { name: 'Foam', says: 'Looks at the foam in the neck; tells its height and temperature.' },
+};
+
+/** A change of gravity in points, with a sign and one decimal: `+0.3`, `−0.9`. */
+export const signedPoints = (gravity: number) => {
+  const points = Math.round(gravity * 1e4) / 10;
+  return `${points < 0 ? '−' : '+'}${Math.abs(points).toFixed(1)}`;
+};

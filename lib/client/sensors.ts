@@ -1,7 +1,7 @@
 'use client';
 
 import type { z } from 'zod';
-import type { CreatedSensorBody, createSensor as createSensorSchema, refusedList, SensorBody, sensorList, UpdateSensor } from '../contracts/sensors';
+import type { CreatedSensorBody, createSensor as createSensorSchema, rawReadingList, refusedList, SensorBody, SensorHealthBody, SensorLimits, sensorList, stayList, UpdateSensor } from '../contracts/sensors';
 import { sendJson, withQuery } from './fetcher';
 import { isPath, refresh, useResource } from './use-resource';
 
@@ -33,4 +33,34 @@ export async function updateSensor(id: string, input: UpdateSensor): Promise<Sen
   const sensor = await sendJson<SensorBody>('PATCH', `/sensors/${id}`, input);
   await refresh((path) => path.startsWith('/sensors') || path.startsWith('/batches') || isPath('/shelf')(path));
   return sensor;
+}
+
+export const useSensorHealth = (id: string) => useResource<SensorHealthBody>(`/sensors/${id}/health`);
+export const useStays = (id: string) => useResource<z.infer<typeof stayList>>(`/sensors/${id}/stays`);
+export const useRawReadings = (id: string, limit: number, everyMs = 0) => useResource<z.infer<typeof rawReadingList>>(withQuery(`/sensors/${id}/readings`, { limit }), { refreshInterval: everyMs });
+export const useSensorLimits = () => useResource<SensorLimits>('/sensor-limits');
+
+const ofSensors = (path: string) => path.startsWith('/sensors') || path.startsWith('/batches') || isPath('/shelf')(path);
+
+/** The answer holds the new secret, this one time; the old one ends at once. */
+export async function rotateSensor(id: string): Promise<CreatedSensorBody> {
+  const sensor = await sendJson<CreatedSensorBody>('POST', `/sensors/${id}/secret`);
+  await refresh(isPath(`/sensors/${id}`));
+  return sensor;
+}
+
+export async function removeSensor(id: string): Promise<void> {
+  await sendJson('DELETE', `/sensors/${id}`);
+  await refresh(isPath('/sensors'));
+}
+
+/** Sends a reporting interval down to the sensor. */
+export async function setSensor(id: string, intervalS: number): Promise<void> {
+  await sendJson('POST', `/sensors/${id}/settings`, { interval_s: intervalS });
+  await refresh(ofSensors);
+}
+
+export async function setSensorLimits(input: Partial<SensorLimits>): Promise<void> {
+  await sendJson('PATCH', '/sensor-limits', input);
+  await refresh((path) => path.startsWith('/sensor'));
 }

@@ -1,0 +1,117 @@
+'use client';
+
+import { duration } from '@/components/charts/zone';
+import { Haze } from '@/components/ui/Haze';
+import { ErrorState } from '@/components/ui/Notice';
+import { GroupBar } from '@/components/ui/Page';
+import { Sentence } from '@/components/ui/Sentence';
+import { State } from '@/components/ui/StateMark';
+import type { SensorBody, SensorHealthBody } from '@/lib/contracts/sensors';
+import { useSensorHealth } from '@/lib/client/sensors';
+import { cellWords, everyWords, gravityWords, heardWords, linkWords, temperatureWords } from './words';
+
+/** `about 90 days, 70–120`; the high end may be further off than a line reaches. */
+export function daysWords(days: { value: number; lo: number | null; hi: number | null } | null): string | null {
+  if (!days) return null;
+  const value = Math.round(days.value);
+  if (value < 1) return 'flat';
+  const [lo, hi] = [days.lo === null ? null : Math.floor(days.lo), days.hi === null ? null : Math.ceil(days.hi)];
+  if (lo === null || lo === value) return `about ${value} days`;
+  return hi === null ? `about ${value} days, ${lo} at least` : `about ${value} days, ${lo}–${hi}`;
+}
+
+function clockWords(offset: number | null): string {
+  if (offset === null) return 'sends no time';
+  if (Math.abs(offset) < 5) return 'right to 5 s';
+  return `${duration(Math.abs(offset))} ${offset > 0 ? 'fast' : 'slow'}`;
+}
+
+function factsOf(sensor: SensorBody, health: SensorHealthBody | undefined, now: number, timeZone: string): { name: string; value: string; note?: string | null }[] {
+  const { battery, signal, gaps } = health ?? {};
+  const own =
+    sensor.kind === 'float'
+      ? [{ name: 'gravity', value: gravityWords(sensor.last?.gravity) }]
+      : [];
+  return [
+    { name: 'last heard', value: heardWords(sensor, now, timeZone) },
+    { name: 'speaks every', value: everyWords(sensor.interval_s), note: sensor.settings && !sensor.settings.confirmed_at ? `asked for ${everyWords(sensor.settings.interval_s)}` : null },
+    ...own,
+    { name: 'temperature', value: temperatureWords(sensor.last?.temperature) },
+    { name: 'cell', value: cellWords(sensor.last?.battery), note: daysWords(battery?.days ?? null) },
+    { name: 'link', value: linkWords(signal?.dbm ?? sensor.last?.signal), note: signal ? `weakest −${Math.abs(Math.round(signal.weakest))}` : null },
+    { name: 'missed in 24 h', value: gaps ? `${gaps.missed} of ${gaps.heard + gaps.missed}` : 'sends no numbers', note: gaps && gaps.restarts > 0 ? `started again ${gaps.restarts} ×` : null },
+    { name: 'its clock', value: health ? clockWords(health.clock_offset_s) : '–' },
+  ];
+}
+
+function Findings({ health }: { health: SensorHealthBody }) {
+  return health.findings.length === 0 ? (
+    <div className="border-b px-(--margin) py-3">
+      <State state="Done" word="As it should be" />
+      <p className="type-body pt-1 text-ink2">Cell, link, clock and numbers are within the cellar’s limits.</p>
+    </div>
+  ) : (
+    <ul>
+      {health.findings.map((finding) => (
+        <li key={`${finding.of}${finding.says}`} className="flex flex-col gap-0.5 border-b border-rule bg-lit px-(--margin) py-2.5 last:border-rule2">
+          <State state={finding.of === 'silence' ? 'Silent' : 'Check'} word={finding.of === 'silence' ? 'Silent' : 'Check'} />
+          <p className="type-verdict">
+            <Sentence strong>{finding.says}</Sentence>
+          </p>
+          <p className="type-reason text-ink2">
+            <Sentence>{finding.act}</Sentence>
+          </p>
+        </li>
+      ))}
+    </ul>
+  );
+}
+
+/** How the sensor does: what is not as it should be first, then its figures. */
+export function Health({ sensor, now, timeZone }: { sensor: SensorBody; now: number; timeZone: string }) {
+  const { data: health, error, loading, retry } = useSensorHealth(sensor.id);
+  return (
+    <section aria-label="Health">
+      {loading && <Haze height={48} label="Loading its health" className="mx-(--margin) my-3" />}
+      {error && !health && (
+        <ErrorState title="Its health did not load" onRetry={retry}>
+          {error.message}
+        </ErrorState>
+      )}
+      {health && <Findings health={health} />}
+      <dl className="grid grid-cols-2 border-b strip:grid-cols-4 wide:grid-cols-2">
+        {factsOf(sensor, health, now, timeZone).map((fact) => (
+          <div key={fact.name} className="min-w-0 border-b border-rule px-(--margin) py-2">
+            <dt className="type-label text-ink2">{fact.name}</dt>
+            <dd className="break-words font-mono text-[0.9375rem]/[1.25rem] font-semibold">{fact.value}</dd>
+            {fact.note && <dd className="type-label text-ink2">{fact.note}</dd>}
+          </div>
+        ))}
+      </dl>
+      {health && health.call && sensor.batch && (
+        <p className="type-reason border-b px-(--margin) py-2 text-ink2">
+          The watch says: <Sentence>{health.call.headline}</Sentence> <Sentence>{health.call.reason}</Sentence>
+        </p>
+      )}
+    </section>
+  );
+}
+
+/** Refused messages by their reason, above the list of them. */
+export function RefusedReasons({ id }: { id: string }) {
+  const { data } = useSensorHealth(id);
+  if (!data || data.refused.length === 0) return null;
+  return (
+    <>
+      <GroupBar word="Refused, by reason" />
+      <ul>
+        {data.refused.map((group) => (
+          <li key={group.reason} className="grid grid-cols-[3.5rem_minmax(0,1fr)] gap-x-4 border-b border-rule px-(--margin) py-1.5">
+            <span className="font-mono text-[0.875rem] font-semibold">{group.count} ×</span>
+            <span className="type-body break-words">{group.reason}</span>
+          </li>
+        ))}
+      </ul>
+    </>
+  );
+}

@@ -1,0 +1,73 @@
+'use client';
+
+import { useState, type FormEvent } from 'react';
+import { Button } from '@/components/ui/Button';
+import { Choice } from '@/components/ui/Choice';
+import { Field } from '@/components/ui/Field';
+import { FormError } from '@/components/ui/Notice';
+import { calibrationPointForm, type CalibrationBody } from '@/lib/contracts/calibration';
+import { addPoint } from '@/lib/client/calibration';
+import { readNumber } from './numbers';
+import { useWork } from './use-work';
+
+type Way = 'water' | 'sugar' | 'hydrometer';
+const WAYS: readonly { value: Way; name: string }[] = [
+  { value: 'water', name: 'Water' },
+  { value: 'sugar', name: 'Sugar' },
+  { value: 'hydrometer', name: 'Hydrometer' },
+];
+const HINTS: Record<Way, string> = {
+  water: 'Plain water: 1.000 at 20 °C.',
+  sugar: 'Table sugar weighed in, then water up to the mark of one litre.',
+  hydrometer: 'Any liquid, read with a hydrometer you trust.',
+};
+
+/** Notes a point. The inclination it says right now is offered. */
+export function PointForm({ sensor, last }: { sensor: string; last: CalibrationBody['last'] }) {
+  const [way, setWay] = useState<Way>('sugar');
+  const [values, setValues] = useState({ inclination: '', gravity: '', sugar: '', temperature: '20' });
+  const { busy, failed, fields, run, setFields } = useWork('The point was not noted. Try again.');
+  const set = (name: keyof typeof values) => (event: { target: { value: string } }) => setValues((before) => ({ ...before, [name]: event.target.value }));
+
+  async function submit(event: FormEvent) {
+    event.preventDefault();
+    const parsed = calibrationPointForm.safeParse({
+      source: way,
+      inclination: readNumber(values.inclination),
+      temperature: readNumber(values.temperature),
+      gravity: way === 'hydrometer' ? readNumber(values.gravity) : null,
+      sugar_g_per_l: way === 'sugar' ? readNumber(values.sugar) : null,
+    });
+    if (!parsed.success) {
+      const errors: Record<string, string[]> = {};
+      for (const issue of parsed.error.issues) (errors[issue.path.join('.')] ??= []).push(issue.message);
+      setFields(errors);
+      return;
+    }
+    if (await run(() => addPoint(sensor, parsed.data))) setValues((before) => ({ ...before, inclination: '', gravity: '', sugar: '' }));
+  }
+
+  return (
+    <form noValidate onSubmit={(event) => void submit(event)} className="flex flex-col gap-3 bg-desk px-(--margin) py-4">
+      {failed && <FormError>{failed}</FormError>}
+      <Choice label="the float is in" value={way} onChoose={setWay} options={WAYS} className="max-w-[420px]" />
+      <p className="type-reason -mt-1.5 text-ink2">{HINTS[way]}</p>
+      <div className="flex flex-wrap items-start gap-3">
+        {way === 'sugar' && <Field label="sugar in a litre" inputMode="decimal" unit="g/L" value={values.sugar} onChange={set('sugar')} error={fields.sugar_g_per_l?.[0] ?? fields.gravity?.[0]} className="w-40" />}
+        {way === 'hydrometer' && <Field label="gravity at 20 °C" inputMode="decimal" value={values.gravity} onChange={set('gravity')} error={fields.gravity?.[0]} className="w-40" />}
+        <Field label="it leans" inputMode="decimal" unit="°" value={values.inclination} onChange={set('inclination')} error={fields.inclination?.[0]} className="w-36" />
+        <Field label="the liquid is" inputMode="decimal" unit="°C" value={values.temperature} onChange={set('temperature')} error={fields.temperature?.[0]} className="w-32" />
+      </div>
+      <div className="flex flex-wrap items-center gap-2">
+        <Button type="submit" disabled={busy}>
+          Note the point
+        </Button>
+        {last && (
+          <Button look="quiet" onClick={() => setValues((before) => ({ ...before, inclination: last.inclination.toFixed(2), temperature: (last.temperature ?? 20).toFixed(1) }))}>
+            Take what it said last: {last.inclination.toFixed(1)}°
+          </Button>
+        )}
+      </div>
+    </form>
+  );
+}

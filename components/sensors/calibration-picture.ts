@@ -1,0 +1,47 @@
+import type { CalibrationFit } from '@/lib/core/calibration/calibrate';
+
+/** Where things stand in the picture, px. */
+export interface Frame {
+  width: number;
+  height: number;
+  left: number;
+  right: number;
+  top: number;
+  bottom: number;
+}
+
+export interface Scale {
+  from: number;
+  to: number;
+  ticks: number[];
+}
+
+const STEPS = [0.001, 0.002, 0.005, 0.01, 0.02, 0.05, 0.1, 0.5, 1, 2, 5, 10, 20, 50];
+
+/** A scale that holds the values with even ticks, about `wanted` of them. */
+export function scaleOf(values: readonly number[], wanted: number): Scale {
+  const [low, high] = values.length === 0 ? [0, 1] : [Math.min(...values), Math.max(...values)];
+  const span = high - low || Math.abs(high) * 0.01 || 1;
+  const step = STEPS.find((candidate) => span / candidate <= wanted) ?? 100;
+  const from = Math.floor((low - span * 0.02) / step) * step;
+  const to = Math.ceil((high + span * 0.02) / step) * step;
+  const count = Math.round((to - from) / step);
+  return { from, to, ticks: Array.from({ length: count + 1 }, (_, index) => Number((from + index * step).toFixed(6))) };
+}
+
+export const placed = (scale: Scale, start: number, end: number) => (value: number) => start + ((value - scale.from) / (scale.to - scale.from)) * (end - start);
+
+/** The curve and its band as SVG paths. */
+export function curvePaths(fit: CalibrationFit, x: (degrees: number) => number, y: (gravity: number) => number): { line: string; band: string } {
+  const at = (inclination: number, felt: number) => `${x(inclination).toFixed(1)} ${y(felt).toFixed(1)}`;
+  const line = fit.curve.map((point, index) => `${index === 0 ? 'M' : 'L'}${at(point.inclination, point.felt)}`).join('');
+  const upper = fit.curve.map((point) => at(point.inclination, point.felt + point.half));
+  const lower = fit.curve.map((point) => at(point.inclination, point.felt - point.half)).reverse();
+  return { line, band: `M${[...upper, ...lower].join('L')}Z` };
+}
+
+/** The picture in one sentence, for those who hear the page. */
+export function pictureWords(fit: CalibrationFit): string {
+  const points = (gravity: number) => `${(gravity * 1000).toFixed(1)} points`;
+  return `Curve of degree ${fit.degree} through ${fit.points.length} points from ${fit.gravityLow.toFixed(3)} at ${fit.low.toFixed(1)}° to ${fit.gravityHigh.toFixed(3)} at ${fit.high.toFixed(1)}°; largest left over ${points(Math.max(...fit.points.map((point) => Math.abs(point.leftOver))))}.`;
+}
