@@ -136,12 +136,6 @@ export const up: Migration['up'] = async (run) => {
   await run(`create index photos_entry on photos (entry_id) where removed_at is null`);
   await run(`create index photos_lot on photos (lot_id) where removed_at is null`);
   await run(`create index photos_tasting on photos (tasting_id) where removed_at is null`);
-  // Files whose row is gone: dropped from the store later, so that no failure leaves a row without its file.
-  await run(`
-    create table photo_leavings (
-      key text primary key,
-      at timestamptz not null default now()
-    )`);
 
   await run(`
     create table webhooks (
@@ -178,7 +172,7 @@ export const up: Migration['up'] = async (run) => {
 };
 
 export const down: Migration['down'] = async (run) => {
-  await run(`drop table if exists webhook_deliveries, webhooks, photo_leavings, photos cascade`);
+  await run(`drop table if exists webhook_deliveries, webhooks, photos cascade`);
   await run(`alter table batches drop column import_id`);
   await run(`drop table if exists imports, sensor_limits, recalculations cascade`);
   await run(`alter table readings drop column gravity_sent, drop column calibration_id`);
