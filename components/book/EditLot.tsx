@@ -50,10 +50,8 @@ export function EditLot({ lot, timeZone, onDone }: { lot: LotBody; timeZone: str
     <form onSubmit={(event) => void send(event)} noValidate className="flex flex-col gap-4">
       <TextField label="Next time" rows={3} maxLength={500} value={draft.next} onChange={set('next')} error={errors.next_time?.[0]} hint="Stands on the must sheet, and goes along when it is copied." />
       <Field label="Name" autoComplete="off" maxLength={80} value={draft.name} onChange={set('name')} error={errors.name?.[0]} />
-      <div className="grid grid-cols-2 gap-3">
-        <Field label="Code" autoComplete="off" maxLength={20} value={draft.code} onChange={set('code')} error={errors.code?.[0]} />
-        <Field label="Ready from" type="datetime-local" value={draft.ready} onChange={set('ready')} error={errors.ready_from?.[0]} />
-      </div>
+      <Field label="Code" autoComplete="off" maxLength={20} value={draft.code} onChange={set('code')} error={errors.code?.[0]} />
+      <Field label="Ready from" type="datetime-local" value={draft.ready} onChange={set('ready')} error={errors.ready_from?.[0]} />
       <TextField label="Note" rows={3} maxLength={2000} value={draft.note} onChange={set('note')} error={errors.note?.[0]} />
       {failed && <FormError>{failed}</FormError>}
       <Button look="first" type="submit" disabled={sending} className="self-end">

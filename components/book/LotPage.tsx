@@ -9,6 +9,7 @@ import { drinkHex } from '@/components/charts/palette';
 import { Shares } from '@/components/share/Shares';
 import { Tastings } from '@/components/tasting/Tastings';
 import { Button, LinkButton } from '@/components/ui/Button';
+import { Facts, type Fact } from '@/components/ui/Facts';
 import { Haze } from '@/components/ui/Haze';
 import { How } from '@/components/ui/How';
 import { ErrorState, FormError } from '@/components/ui/Notice';
@@ -21,7 +22,6 @@ import { undoOpening, useLot } from '@/lib/client/lots';
 import { useMe } from '@/lib/client/me';
 import type { LotBody } from '@/lib/contracts/lots';
 import { BOTTLES, CLOSURE_CATALOGUE } from '@/lib/core/bottling/bottles';
-import type { How as HowAnswer } from '@/lib/core/how/how';
 import { BenchRecord } from './BenchRecord';
 import { EditLot } from './EditLot';
 import { Serve } from './Serve';
@@ -69,17 +69,7 @@ export function LotPage({ id }: { id: string }) {
           </p>
         </section>
       )}
-      <dl className="grid grid-cols-2 border-b strip:grid-cols-4 wide:grid-cols-8">
-        {factsOf(lot, day).map(({ name, says, how }) => (
-          <div key={name} className="border-r border-b border-rule px-3 py-2 first:pl-(--margin) wide:border-b-0">
-            <dt className="type-label text-ink2">{name}</dt>
-            <dd>
-              <span className="font-mono text-[0.9375rem] font-semibold leading-5">{says}</span>
-              {how && <How how={how} of={name} />}
-            </dd>
-          </div>
-        ))}
-      </dl>
+      <Facts facts={factsOf(lot, day)} columns="grid-cols-2 strip:grid-cols-4 wide:grid-cols-8" />
       {lot.note && <p className="type-body border-b px-(--margin) py-2 break-words">{lot.note}</p>}
       <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px]">
         <div className="min-w-0">
@@ -104,12 +94,6 @@ export function LotPage({ id }: { id: string }) {
       )}
     </div>
   );
-}
-
-interface Fact {
-  name: string;
-  says: string;
-  how?: HowAnswer;
 }
 
 function factsOf(lot: LotBody, day: (at: string) => string): Fact[] {

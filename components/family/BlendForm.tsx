@@ -17,7 +17,7 @@ import { blendForm, type DrinkBody } from '@/lib/contracts/family';
 import { blendInto } from '@/lib/core/family/cellarwork';
 import { contentsOf } from '@/lib/core/family/contents';
 import { BlendPart, type BlendPartDraft } from './BlendPart';
-import { useSend } from './use-send';
+import { useSend } from '@/lib/client/use-send';
 import { newVessel, showsVessel, vesselBody, VesselFields } from './VesselFields';
 
 /** What a part brings, where its gravity is known: the same reckoning as the server's. */

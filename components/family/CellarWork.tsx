@@ -7,9 +7,9 @@ import { Additions } from '@/components/additions/Additions';
 import { Finings } from '@/components/additions/Finings';
 import { degrees, litres, percent } from '@/components/batch/figures';
 import { LinkButton } from '@/components/ui/Button';
+import { Facts } from '@/components/ui/Facts';
 import { FilterTabs } from '@/components/ui/FilterTabs';
 import { Haze } from '@/components/ui/Haze';
-import { How } from '@/components/ui/How';
 import { ErrorState } from '@/components/ui/Notice';
 import { useNow } from '@/components/ui/now';
 import { PageHead } from '@/components/ui/Page';
@@ -34,6 +34,8 @@ const TABS = [
   { value: 'family', name: 'Family' },
 ] as const;
 type Tab = (typeof TABS)[number]['value'];
+/** Work that may change the family, which stands beside it. */
+const MOVES: readonly Tab[] = ['top-up', 'split', 'blend'];
 
 /** The gravity that a must with all the sugar so far would have had. */
 const WITH_ADDITIONS = (drink: DrinkBody): HowAnswer =>
@@ -51,19 +53,7 @@ function InIt({ drink }: { drink: DrinkBody }) {
     { name: 'temperature', says: drink.temperature_c === null ? 'not told' : degrees(drink.temperature_c) },
     { name: 'sulphite added', says: drink.sulphite_added ? `${Math.ceil(drink.total_sulphite_mg_l.hi)} mg/L at most` : 'none logged', how: drink.sulphite_added ? SULPHITE_SO_FAR : undefined },
   ];
-  return (
-    <dl className="grid grid-cols-2 border-b bg-desk strip:grid-cols-3 wide:grid-cols-6">
-      {facts.map(({ name, says, how }) => (
-        <div key={name} className="px-(--margin) py-2">
-          <dt className="type-label text-ink2">{name}</dt>
-          <dd>
-            <span className="font-mono text-[0.875rem] font-semibold">{says}</span>
-            {how && <How how={how} of={name} />}
-          </dd>
-        </div>
-      ))}
-    </dl>
-  );
+  return <Facts facts={facts} columns="grid-cols-2 strip:grid-cols-3 wide:grid-cols-6" className="bg-desk" />;
 }
 
 /** What is done to a batch in the cellar: additions, racking, topping up, fining; and its family. */
@@ -107,7 +97,7 @@ export function CellarWork({ batchId }: { batchId: string }) {
       <div className="border-b px-(--margin) py-2.5">
         <FilterTabs label="Do" value={tab} onChoose={setTab} tabs={shown} />
       </div>
-      <div className="px-(--margin) py-4">
+      <div className={`px-(--margin) py-4 ${MOVES.includes(tab) ? 'wide:grid wide:grid-cols-[600px_minmax(0,1fr)] wide:gap-x-12' : ''}`}>
         {tab === 'additions' &&
           (drink ? (
             <Additions batchId={batch.id} drink={drink} kind={batch.kind} mayLog={mayAlter} />
@@ -124,6 +114,12 @@ export function CellarWork({ batchId }: { batchId: string }) {
         {tab === 'split' && <SplitForm batch={batch} now={now} timeZone={timeZone} />}
         {tab === 'blend' && <BlendForm batch={batch} now={now} timeZone={timeZone} />}
         {tab === 'family' && <Family batchId={batch.id} timeZone={timeZone} />}
+        {MOVES.includes(tab) && (
+          <aside aria-label="Family" className="max-wide:mt-8 max-wide:border-t-[1.5px] max-wide:border-ink max-wide:pt-4">
+            <h2 className="type-sub pb-2">Family</h2>
+            <Family batchId={batch.id} timeZone={timeZone} />
+          </aside>
+        )}
       </div>
     </>
   );

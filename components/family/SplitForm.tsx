@@ -11,7 +11,7 @@ import { Sentence } from '@/components/ui/Sentence';
 import { splitBatch } from '@/lib/client/cellarwork';
 import type { BatchBody } from '@/lib/contracts/batches';
 import { splitForm } from '@/lib/contracts/family';
-import { useSend } from './use-send';
+import { useSend } from '@/lib/client/use-send';
 import { newVessel, showsVessel, vesselBody, VesselFields, type VesselDraft } from './VesselFields';
 
 interface PartDraft {

@@ -3,7 +3,7 @@ import { typedNumber } from '@/components/batch/figures';
 import { Field, Select } from '@/components/ui/Field';
 import { VESSEL_KINDS } from '@/lib/contracts/batches';
 import { NECKS } from '@/lib/core/types';
-import type { PathErrors } from './use-send';
+import type { PathErrors } from '@/lib/client/use-send';
 
 /** A vessel that drink goes into, as it is typed. */
 export interface VesselDraft {

@@ -9,15 +9,7 @@ import { bring, inputsOf } from '@/lib/core/must/line';
 import { about, exactly } from '@/lib/core/units/range';
 import { amountOf, amountText } from './amount';
 import { unitsFor, withSugar, type LineDraft } from './draft';
-import { unitWord, weight } from './words';
-
-const PRESERVATIVES = [
-  ['', 'none, or not told'],
-  ['sorbate', 'sorbate'],
-  ['benzoate', 'benzoate'],
-  ['sulphite', 'sulphite'],
-  ['unknown', 'something not named'],
-] as const;
+import { PRESERVATIVE_WORDS, unitWord, weight } from './words';
 
 /** What the line brings, in words; null while it cannot be weighed. */
 function broughtBy(line: LineDraft): string | null {
@@ -122,7 +114,7 @@ export function LineRow({ line, error, first, last, onChange, onMove, onRemove }
             value={ingredient.preservative ?? ''}
             onChange={(event) => onChange({ ...line, ingredient: { ...ingredient, preservative: (event.target.value || null) as typeof ingredient.preservative } })}
           >
-            {PRESERVATIVES.map(([value, name]) => (
+            {Object.entries(PRESERVATIVE_WORDS).map(([value, name]) => (
               <option key={value} value={value}>
                 {name}
               </option>

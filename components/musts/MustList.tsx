@@ -55,7 +55,12 @@ export function MustList() {
   return (
     <>
       <PageHead title="Must sheets" meta="What goes in, and what it promises.">
-        {write}
+        <div className="flex flex-wrap gap-2">
+          <LinkButton look="quiet" href="/musts/catalogue">
+            Catalogue
+          </LinkButton>
+          {write}
+        </div>
       </PageHead>
       <div className="flex flex-wrap items-end gap-x-4 gap-y-3 border-b bg-desk px-(--margin) py-3">
         <Field label="Find by name" type="search" className="flex-1 basis-44 strip:max-w-80" maxLength={80} value={asked} onChange={(event) => setAsked(event.target.value)} />

@@ -1,18 +1,17 @@
 'use client';
 
 import { useMemo, useState } from 'react';
-import { focusFirstError } from '@/components/batch/focus';
 import { Sheet } from '@/components/batch/Sheet';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
 import { PageHead } from '@/components/ui/Page';
-import { ClientError } from '@/lib/client/fetcher';
 import { updateMust } from '@/lib/client/musts';
 import type { MustBody } from '@/lib/contracts/musts';
 import { CopyForm } from './CopyForm';
-import { checked, draftOf, type SheetErrors } from './draft';
+import { draftOf } from './draft';
 import { Measured } from './Measured';
+import { useKeep } from './use-keep';
 import { Versions } from './Versions';
 import { Workbench } from './Workbench';
 import { WorkSheet } from './WorkSheet';
@@ -28,32 +27,15 @@ interface MustSheetPageProps {
 export function MustSheetPage({ must, mayWrite, mayStart, timeZone, onVersion }: MustSheetPageProps) {
   const [draft, setDraft] = useState(() => draftOf(must.sheet));
   const [note, setNote] = useState('');
-  const [errors, setErrors] = useState<SheetErrors>({});
-  const [failed, setFailed] = useState<string | null>(null);
-  const [sending, setSending] = useState(false);
   const [opened, setOpened] = useState<'copy' | 'measure' | null>(null);
   const newest = must.versions[0]?.version ?? must.version;
   const old = must.version !== newest;
   const changed = useMemo(() => JSON.stringify(draft) !== JSON.stringify(draftOf(must.sheet)), [draft, must.sheet]);
 
-  async function save() {
-    const made = checked(draft);
-    setErrors(made.errors ?? {});
-    setFailed(null);
-    if (made.errors) {
-      if (made.errors.sheet) setFailed(made.errors.sheet);
-      focusFirstError();
-      return;
-    }
-    setSending(true);
-    try {
-      await updateMust(must.id, { sheet: made.sheet, base_version: newest, change_note: note.trim() === '' ? null : note });
-      onVersion(undefined);
-    } catch (error) {
-      setFailed(error instanceof ClientError ? error.message : 'It was not kept. Try again.');
-    }
-    setSending(false);
-  }
+  const { errors, failed, sending, save } = useKeep(async (sheet) => {
+    await updateMust(must.id, { sheet, base_version: newest, change_note: note.trim() === '' ? null : note });
+    onVersion(undefined);
+  });
 
   return (
     <>
@@ -97,7 +79,7 @@ export function MustSheetPage({ must, mayWrite, mayStart, timeZone, onVersion }:
                   As it was
                 </Button>
               )}
-              <Button look="first" disabled={sending || (!changed && !old)} onClick={() => void save()}>
+              <Button look="first" disabled={sending || (!changed && !old)} onClick={() => void save(draft)}>
                 {sending ? 'Keeping' : `Keep as version ${newest + 1}`}
               </Button>
             </div>

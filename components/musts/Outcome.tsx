@@ -58,6 +58,9 @@ function Strengths({ outcome }: { outcome: MustOutcome }) {
   );
 }
 
+/** Pieces give their sugar, and fruit its juice, over days: the must may rise or fall until then. */
+const pitchWords = (pitch: number, whole: number): string => (pitch < whole ? `${pitch.toFixed(3)} at the pitch, the rest of the sugar comes over days` : `${pitch.toFixed(3)} at the pitch, before the fruit has let go of its juice`);
+
 const NOTE_STATE = { preservative: 'Check', volume: 'Check', tolerance: 'Check', diastatic: 'Check', dose: 'Check' } as const;
 
 function Notes({ outcome }: { outcome: MustOutcome }) {
@@ -128,7 +131,7 @@ export function Outcome({ result, kind, vesselL, missing }: { result: MustResult
         <Spread name="Original gravity" {...og} from={1} to={og.hi > 1.13 ? 1.2 : 1.14} write={(value) => value.toFixed(3)} />
         <p className="type-label mt-0.5 text-ink2">
           {ends(og, 3)}
-          {pitchDiffers && `; ${outcome.gravityAtPitch.value.value.toFixed(3)} at the pitch, the rest comes over days`}
+          {pitchDiffers && `; ${pitchWords(outcome.gravityAtPitch.value.value, og.value)}`}
         </p>
         <How how={outcome.originalGravity.how} of="original gravity" />
       </div>

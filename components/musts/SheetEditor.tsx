@@ -1,24 +1,32 @@
 'use client';
 
 import { useState, type ReactNode } from 'react';
+import { Sheet } from '@/components/batch/Sheet';
 import { Button } from '@/components/ui/Button';
 import { Choice } from '@/components/ui/Choice';
 import { Field, Select, TextField } from '@/components/ui/Field';
+import { useMe } from '@/lib/client/me';
 import { useCatalogue } from '@/lib/client/musts';
 import type { CatalogueBody, IngredientBody } from '@/lib/contracts/catalogue';
 import { INGREDIENT_KINDS } from '@/lib/core/must/ingredients';
 import { DRINK_KINDS } from '@/lib/core/types';
 import { newLine, type LineDraft, type SheetDraft, type SheetErrors } from './draft';
 import { LineRow } from './LineRow';
+import { draftOfKind, emptyYeast } from './own-draft';
+import { IngredientOfOurs, YeastOfOurs } from './OwnForms';
 import { DRINK_WORDS, KIND_WORDS } from './words';
 
+/** The choice that opens a form instead. */
+const NOT_LISTED = 'not listed';
+
 /** An ingredient as the sheet keeps it: without the id of the catalogue's row. */
-function kept({ id: _row, ...ingredient }: CatalogueBody['ingredients'][number]): IngredientBody {
+function kept({ id: _row, ...ingredient }: IngredientBody & { id: string | null }): IngredientBody {
   return ingredient;
 }
 
-function AddLine({ catalogue, onAdd }: { catalogue: CatalogueBody | undefined; onAdd: (line: LineDraft) => void }) {
+function AddLine({ catalogue, mayExtend, onAdd }: { catalogue: CatalogueBody | undefined; mayExtend: boolean; onAdd: (line: LineDraft) => void }) {
   const [key, setKey] = useState('');
+  const [own, setOwn] = useState(false);
   const chosen = catalogue?.ingredients.find((item) => item.key === key);
   return (
     <div className="flex flex-wrap items-end gap-2 py-3">
@@ -49,6 +57,23 @@ function AddLine({ catalogue, onAdd }: { catalogue: CatalogueBody | undefined; o
       >
         Add the line
       </Button>
+      {mayExtend && (
+        <Button look="quiet" onClick={() => setOwn(true)}>
+          Not in the list
+        </Button>
+      )}
+      {own && (
+        <Sheet title="An ingredient of your own" onClose={() => setOwn(false)}>
+          <IngredientOfOurs
+            id={null}
+            start={draftOfKind('fruit', '')}
+            onKept={(item) => {
+              if (item.sort === 'ingredient') onAdd(newLine(kept(item.ingredient)));
+              setOwn(false);
+            }}
+          />
+        </Sheet>
+      )}
     </div>
   );
 }
@@ -63,6 +88,8 @@ interface SheetEditorProps {
 /** The sheet as a form. */
 export function SheetEditor({ draft, errors, onChange, children }: SheetEditorProps) {
   const { catalogue } = useCatalogue();
+  const { may } = useMe();
+  const [ownYeast, setOwnYeast] = useState(false);
   const set = (change: Partial<SheetDraft>) => onChange({ ...draft, ...change });
   const setLine = (next: LineDraft) => set({ lines: draft.lines.map((line) => (line.id === next.id ? next : line)) });
   const move = (index: number, by: -1 | 1) => {
@@ -85,6 +112,7 @@ export function SheetEditor({ draft, errors, onChange, children }: SheetEditorPr
           value={draft.yeast?.name ?? ''}
           onChange={(event) => {
             const found = yeasts.find((yeast) => yeast.name === event.target.value);
+            if (event.target.value === NOT_LISTED) return setOwnYeast(true);
             if (!found) return set({ yeast: null });
             const { id: _row, ...yeast } = found;
             set({ yeast });
@@ -98,10 +126,26 @@ export function SheetEditor({ draft, errors, onChange, children }: SheetEditorPr
               {yeast.name}
             </option>
           ))}
+          {may('catalogue.write') && <option value={NOT_LISTED}>another, by its packet</option>}
         </Select>
         <Field label="Vessel holds" unit="L" inputMode="decimal" autoComplete="off" value={draft.vessel} onChange={(event) => set({ vessel: event.target.value })} error={errors.vessel} />
         <Field label="Boiled away" unit="L" inputMode="decimal" autoComplete="off" value={draft.boiled} onChange={(event) => set({ boiled: event.target.value })} error={errors.boiled} />
       </div>
+      {ownYeast && (
+        <Sheet title="A yeast of your own" onClose={() => setOwnYeast(false)}>
+          <YeastOfOurs
+            id={null}
+            start={emptyYeast()}
+            onKept={(item) => {
+              if (item.sort === 'yeast') {
+                const { id: _row, ...yeast } = item.yeast;
+                set({ yeast });
+              }
+              setOwnYeast(false);
+            }}
+          />
+        </Sheet>
+      )}
       <section aria-labelledby="lines">
         <div className="flex flex-wrap items-baseline gap-x-4 border-b-[1.5px] border-ink pb-1.5">
           <h2 id="lines" className="type-sub">
@@ -124,7 +168,7 @@ export function SheetEditor({ draft, errors, onChange, children }: SheetEditorPr
             />
           ))}
         </ol>
-        <AddLine catalogue={catalogue} onAdd={(line) => set({ lines: [...draft.lines, line] })} />
+        <AddLine catalogue={catalogue} mayExtend={may('catalogue.write')} onAdd={(line) => set({ lines: [...draft.lines, line] })} />
       </section>
       <TextField label="Method, in your words" rows={4} maxLength={5000} value={draft.method} onChange={(event) => set({ method: event.target.value })} />
       {children}

@@ -23,6 +23,8 @@ export const KIND_WORDS: Record<IngredientBody['kind'], string> = {
   spice: 'Spice',
 };
 
+export const PRESERVATIVE_WORDS = { '': 'none, or not told', sorbate: 'sorbate', benzoate: 'benzoate', sulphite: 'sulphite', unknown: 'something not named' } as const;
+
 export const DRINK_WORDS: Record<DrinkKind, string> = { beer: 'Beer', cider: 'Cider', mead: 'Mead', wine: 'Country wine' };
 export const SWEET_WORDS: Record<Sweetness, string> = { dry: 'dry', medium_dry: 'medium dry', semi_sweet: 'semi-sweet', sweet: 'sweet' };
 

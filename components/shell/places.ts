@@ -1,10 +1,10 @@
 import type { ComponentType } from 'react';
-import { BookIcon, BottleIcon, FlagIcon, FloatIcon, LabelIcon, LinesIcon, RoundsIcon, SheetIcon, ShelfIcon } from '@/components/ui/icons';
+import { BookIcon, BottleIcon, CompareIcon, FlagIcon, FloatIcon, LabelIcon, LinesIcon, RoundsIcon, SheetIcon, ShelfIcon } from '@/components/ui/icons';
 import type { Action } from '@/lib/core/actions';
 
 /** A page of the main navigation. */
 export interface Place {
-  href: '/shelf' | '/rounds' | '/musts' | '/bench' | '/labels' | '/book' | '/alerts' | '/sensors' | '/settings';
+  href: '/shelf' | '/rounds' | '/musts' | '/bench' | '/labels' | '/book' | '/compare' | '/alerts' | '/sensors' | '/settings';
   name: string;
   icon: ComponentType<{ size?: number; className?: string }>;
   /** Things there that nobody has yet. */
@@ -28,6 +28,7 @@ export function placesFor(may: (action: Action) => boolean, openAlerts: number):
     ...(may('lots.bottle') ? [{ href: '/bench' as const, name: 'Bench', icon: BottleIcon }] : []),
     ...(may('labels.print') ? [{ href: '/labels' as const, name: 'Labels', icon: LabelIcon }] : []),
     ...(may('lots.read') ? [{ href: '/book' as const, name: 'Book', icon: BookIcon }] : []),
+    ...(may('batches.read') ? [{ href: '/compare' as const, name: 'Compare', icon: CompareIcon }] : []),
     ...(may('alerts.read') ? [{ href: '/alerts' as const, name: 'Alerts', icon: FlagIcon, count: openAlerts, tab: true }] : []),
     ...(may('sensors.read') ? [{ href: '/sensors' as const, name: 'Sensors', icon: FloatIcon, tab: true }] : []),
   ];

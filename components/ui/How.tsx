@@ -12,6 +12,32 @@ const STATUS_WORDS: Record<HowAnswer['status'], string> = {
 
 const inputText = (value: number | string | null): string => (value === null ? 'not told' : typeof value === 'number' ? String(Number(value.toPrecision(6))).replace('-', '−') : value);
 
+/** The answer itself: formula, inputs, source. */
+export function HowBody({ how }: { how: HowAnswer }) {
+  return (
+    <div className="mb-2 border-l-[3px] border-rule2 pl-3">
+      <p className="type-reason">
+        <Sentence>{how.formula}</Sentence>
+      </p>
+      {how.inputs.length > 0 && (
+        <dl className="type-label my-1 grid grid-cols-[auto_minmax(0,1fr)] gap-x-3 text-ink2">
+          {how.inputs.map((input) => (
+            <div key={input.name} className="contents">
+              <dt>{input.name}</dt>
+              <dd className="break-words text-ink">
+                {inputText(input.value)} {input.value === null ? '' : input.unit}
+              </dd>
+            </div>
+          ))}
+        </dl>
+      )}
+      <p className="type-tick text-ink2">
+        {STATUS_WORDS[how.status]}: {how.source}
+      </p>
+    </div>
+  );
+}
+
 /** Every figure can be asked "how?": its formula, what went into it, and where the formula is from. */
 export function How({ how, of, className = '' }: { how: HowAnswer; /** Which figure, for those who hear the page. */ of: string; className?: string }) {
   return (
@@ -19,26 +45,7 @@ export function How({ how, of, className = '' }: { how: HowAnswer; /** Which fig
       <summary className="type-tick inline-flex min-h-11 cursor-pointer list-none items-center text-ink2 underline decoration-rule2 underline-offset-2 hover:text-ink strip:min-h-6 [&::-webkit-details-marker]:hidden">
         how?<span className="heard-only"> {of}</span>
       </summary>
-      <div className="mb-2 border-l-[3px] border-rule2 pl-3">
-        <p className="type-reason">
-          <Sentence>{how.formula}</Sentence>
-        </p>
-        {how.inputs.length > 0 && (
-          <dl className="type-label my-1 grid grid-cols-[auto_minmax(0,1fr)] gap-x-3 text-ink2">
-            {how.inputs.map((input) => (
-              <div key={input.name} className="contents">
-                <dt>{input.name}</dt>
-                <dd className="break-words text-ink">
-                  {inputText(input.value)} {input.value === null ? '' : input.unit}
-                </dd>
-              </div>
-            ))}
-          </dl>
-        )}
-        <p className="type-tick text-ink2">
-          {STATUS_WORDS[how.status]}: {how.source}
-        </p>
-      </div>
+      <HowBody how={how} />
     </details>
   );
 }

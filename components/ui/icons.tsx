@@ -32,6 +32,12 @@ export const SheetIcon = (props: IconProps) => (
   </Icon>
 );
 
+export const CompareIcon = (props: IconProps) => (
+  <Icon {...props}>
+    <path d="M2 2v16h16M4.5 4c2 0 3 9.5 13 9.5M4.5 8c3 0 4 7.5 13 7.5" />
+  </Icon>
+);
+
 export const FlagIcon = (props: IconProps) => (
   <Icon {...props}>
     <path d="M3 1.5v17M3 2.4l14 5L3 12.4" />

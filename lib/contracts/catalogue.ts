@@ -54,8 +54,12 @@ export const catalogueSchema = z.object({
 export type CatalogueBody = z.infer<typeof catalogueSchema>;
 
 /** The key, source and status of the cellar's own are the program's to set. */
-export const ingredientForm = ingredientSchema.omit({ key: true, source: true, status: true });
+export const ingredientForm = ingredientSchema
+  .omit({ key: true, source: true, status: true })
+  .refine((item) => item.extract_share.hi + item.insoluble_share <= 1 + 1e-9, { path: ['insoluble_share'], message: 'with the sugar it is more than the whole' });
+export type IngredientForm = z.infer<typeof ingredientForm>;
 export const yeastForm = z.object(yeastFields);
+export type YeastForm = z.infer<typeof yeastForm>;
 
 /** `POST /api/v1/catalogue`, `PATCH /api/v1/catalogue/{id}`. */
 export const catalogueForm = z.discriminatedUnion('sort', [z.object({ sort: z.literal('ingredient'), ingredient: ingredientForm }), z.object({ sort: z.literal('yeast'), yeast: yeastForm })]);

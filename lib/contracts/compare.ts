@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { batchSchema, ENTRY_KINDS } from './batches';
 import { id } from './common';
+import { howSchema } from './figures';
 
 /** `GET /api/v1/compare?batches=a,b`. */
 export const compareQuery = z.object({
@@ -23,7 +24,7 @@ export const compareSchema = z.object({
       temperature: z.array(z.number().nullable()),
       by_hand: z.array(z.object({ hour: z.number(), gravity: z.number() })),
       posts: z.array(z.object({ hour: z.number(), kind: z.enum(ENTRY_KINDS) })),
-      result: z.object({ gravity: z.number().nullable(), abv_percent: z.number().nullable(), attenuation_percent: z.number().nullable(), hours_to_terminal: z.number().nullable(), score: z.number().nullable(), lots: z.number().int() }),
+      result: z.object({ gravity: z.number().nullable(), abv_percent: z.number().nullable(), /** Of the strength. */ how: howSchema.nullable(), attenuation_percent: z.number().nullable(), hours_to_terminal: z.number().nullable(), score: z.number().nullable(), lots: z.number().int() }),
     }),
   ),
 });

@@ -7,6 +7,7 @@ import type { z } from 'zod';
 import { mean } from 'simple-statistics';
 import { Op } from 'sequelize';
 import { ENTRY_KINDS } from '@/lib/contracts/batches';
+import { snakeKeys } from '@/lib/contracts/case';
 import type { CompareBody, compareQuery } from '@/lib/contracts/compare';
 import type { AssessmentBody } from '@/lib/contracts/assessment';
 import { apparentAttenuation } from '@/lib/core/strength/strength';
@@ -56,6 +57,7 @@ async function one(actor: Actor, id: string, points: number): Promise<CompareBod
     result: {
       gravity: state.gravity,
       abv_percent: state.strength?.balling.value.value ?? null,
+      how: state.strength ? snakeKeys(state.strength.balling.how) : null,
       attenuation_percent: og !== null && state.gravity !== null ? apparentAttenuation(og, state.gravity) : null,
       hours_to_terminal: zero === null || !terminalAt ? null : hoursFrom(zero, Date.parse(terminalAt) / 1000),
       score: scores.length > 0 ? Number(mean(scores).toFixed(2)) : null,

@@ -1,6 +1,8 @@
+'use client';
+
 import { useState } from 'react';
 import type { z } from 'zod';
-import { ClientError } from '@/lib/client/fetcher';
+import { ClientError } from './fetcher';
 
 /** First sentence of what is wrong, by the contract's own path: `parts.0.volume_l`. */
 export type PathErrors = Readonly<Record<string, string>>;

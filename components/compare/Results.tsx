@@ -1,0 +1,66 @@
+import Link from 'next/link';
+import { percent } from '@/components/batch/figures';
+import { KIND_WORDS } from '@/components/batch/words';
+import { GroupBar } from '@/components/ui/Page';
+import { How } from '@/components/ui/How';
+import type { Compared } from './curves';
+
+const days = (hours: number): string => `${(hours / 24).toFixed(1)} days`;
+
+/** What became of each, side by side. */
+export function Results({ items }: { items: readonly Compared[] }) {
+  const rows: Array<{ name: string; says: (item: Compared) => string }> = [
+    { name: 'kind', says: ({ batch }) => KIND_WORDS[batch.kind] },
+    { name: 'yeast', says: ({ batch }) => batch.yeast ?? 'not told' },
+    { name: 'original gravity', says: ({ batch }) => batch.original_gravity?.toFixed(3) ?? 'not told' },
+    { name: 'gravity', says: ({ result }) => result.gravity?.toFixed(3) ?? 'not read' },
+    { name: 'attenuation', says: ({ result }) => (result.attenuation_percent === null ? 'not known' : `${result.attenuation_percent.toFixed(0)} %`) },
+    { name: 'from pitch to the end', says: ({ result }) => (result.hours_to_terminal === null ? 'not yet' : days(result.hours_to_terminal)) },
+    { name: 'lots', says: ({ result }) => String(result.lots) },
+    { name: 'tasted', says: ({ result }) => (result.score === null ? 'by nobody' : `${result.score.toFixed(1)} of 10`) },
+  ];
+  return (
+    <section aria-label="Results">
+      <GroupBar word="Results" />
+      <div className="overflow-x-auto" tabIndex={0} role="group" aria-label="Results side by side">
+        <table className="w-full border-collapse">
+          <thead>
+            <tr className="border-b text-left align-bottom">
+              <td className="pl-(--margin)" />
+              {items.map(({ batch }) => (
+                <th key={batch.id} scope="col" className="min-w-36 py-2 pr-5 font-normal">
+                  <Link href={`/batches/${batch.id}`} className="type-name-low break-words">
+                    {batch.name}
+                  </Link>
+                </th>
+              ))}
+            </tr>
+          </thead>
+          <tbody>
+            <tr className="border-b border-rule align-baseline">
+              <th scope="row" className="type-label py-1.5 pl-(--margin) pr-4 text-left font-medium text-ink2">strength</th>
+              {items.map(({ batch, result }) => (
+                <td key={batch.id} className="py-1.5 pr-5">
+                  <span className="font-mono text-[0.875rem] font-semibold">{result.abv_percent === null ? 'not known' : percent(result.abv_percent)}</span>
+                  {result.how && <How how={result.how} of={`strength of ${batch.name}`} />}
+                </td>
+              ))}
+            </tr>
+            {rows.map((row) => (
+              <tr key={row.name} className="border-b border-rule align-baseline">
+                <th scope="row" className="type-label py-1.5 pl-(--margin) pr-4 text-left font-medium text-ink2">
+                  {row.name}
+                </th>
+                {items.map((item) => (
+                  <td key={item.batch.id} className="py-1.5 pr-5 font-mono text-[0.875rem] font-semibold">
+                    {row.says(item)}
+                  </td>
+                ))}
+              </tr>
+            ))}
+          </tbody>
+        </table>
+      </div>
+    </section>
+  );
+}
