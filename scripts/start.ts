@@ -159,6 +159,7 @@ async function main(): Promise<void> {
     console.log(`Ready: ${base}  (${((Date.now() - began) / 1000).toFixed(0)} s)`);
     if (mailbox) console.log(`  Mailbox: http://127.0.0.1:${env.MAILBOX_PORT}`);
     console.log(env.MQTT_URL ? `  Sensors: ${env.MQTT_URL}` : `  Sensors: mqtt://${env.HOST}:${env.MQTT_PORT}`);
+    if (prepared.empty) console.log('  Nobody can sign in yet. Run: npm run keeper -- you@your.example "Name of the cellar"');
     if (prepared.demoSignIns.length > 0) {
       console.log('  Demo sign-ins:');
       for (const { role, email, password } of prepared.demoSignIns) console.log(`    ${role.padEnd(7)} ${email.padEnd(28)} ${password}`);

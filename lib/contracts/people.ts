@@ -70,6 +70,9 @@ export const withPassphrase = z.object({ passphrase: given });
 export const chooseCellar = z.object({ cellar_id: id });
 export const createCellar = z.object({ name: line(80), time_zone: timeZone });
 export type CreateCellar = z.infer<typeof createCellar>;
+/** A cellar for somebody who has no account yet. */
+export const foundCellar = createCellar.extend({ email });
+export type FoundCellar = z.infer<typeof foundCellar>;
 export const updateCellar = z.object({ name: line(80).optional(), time_zone: timeZone.optional() });
 export const deleteCellar = z.object({ name: z.string().max(200), passphrase: given });
 export const madeCellar = z.object({ id });

@@ -12,6 +12,8 @@ import { seedDemo } from './demo';
 
 export interface Prepared {
   seededBatches: number;
+  /** Nobody can sign in yet. */
+  empty: boolean;
   demoSignIns: ReadonlyArray<{ role: string; email: string; password: string }>;
 }
 
@@ -34,6 +36,7 @@ export async function prepareDatabase({ demo }: { demo: boolean | null }): Promi
     const known = new Set((await Person.findAll({ where: { email: DEMO_PEOPLE.map((person) => person.email) } })).map((person) => person.email));
     return {
       seededBatches,
+      empty: empty && seededBatches === 0,
       demoSignIns: DEMO_PEOPLE.filter((person) => known.has(person.email)).map(({ role, email }) => ({ role, email, password: DEMO_PASSPHRASE })),
     };
   } finally {
