@@ -11,6 +11,8 @@ import { StateMark } from '@/components/ui/StateMark';
 import { useAlerts } from '@/lib/client/alerts';
 import { useMe } from '@/lib/client/me';
 import { useShelf } from '@/lib/client/shelf';
+import { useKeptSince } from '@/lib/client/kept';
+import { useKeepingAhead } from '@/lib/client/use-keeping-ahead';
 import { useLiveState } from '@/lib/client/use-live-changes';
 import { Herald } from './Herald';
 import { jobsOf, nothingDue } from './jobs';
@@ -43,8 +45,10 @@ export function Shelf() {
   const layout = usePageLayout();
   const { me, may } = useMe();
   const live = useLiveState();
+  const kept = useKeptSince();
   const timeZone = me?.cellar.time_zone ?? 'UTC';
   const { shelf, error, loading, retry } = useShelf(now === null ? null : askedSpan(now));
+  useKeepingAhead(shelf?.items);
   const mayTake = may('alerts.acknowledge');
   const open = useAlerts({ state: 'open', limit: 100 });
   const taken = useAlerts({ state: 'acknowledged', limit: 100 });
@@ -76,7 +80,7 @@ export function Shelf() {
 
   const phone = layout === 'strip';
   const span = { from: now - DAYS[layout].back * DAY, to: now + DAYS[layout].ahead * DAY };
-  const staleAt = live.state === 'offline' || error ? Date.parse(shelf.now) / 1000 : null;
+  const staleAt = live.state === 'offline' || error || kept !== null ? Date.parse(shelf.now) / 1000 : null;
   const today = { jobs, ticks, nothing: nothingDue(views, now, timeZone), now, timeZone, mayTake, loading: loading || ((open.loading || taken.loading) && may('alerts.read')) };
   return (
     <div className="[--call:clamp(330px,28.06vw,404px)] [--vessel:308px]">

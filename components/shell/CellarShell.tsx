@@ -1,17 +1,20 @@
 'use client';
 
 import type { ReactNode } from 'react';
+import { Keeper } from '@/components/offline/Keeper';
 import { useAlerts } from '@/lib/client/alerts';
 import { useLiveChanges } from '@/lib/client/use-live-changes';
 import { Header } from './Header';
 import { OfflineBar } from './OfflineBar';
 import { PhoneTabs } from './PhoneTabs';
 import { placesFor } from './places';
+import { useBelonging } from './use-belonging';
 import { useGlance } from './use-glance';
 
 /** What stands around every page of a cellar: head, tabs, and the line that keeps the page new. */
 export function CellarShell({ children }: { children: ReactNode }) {
   const live = useLiveChanges();
+  useBelonging();
   const glance = useGlance();
   const { counts } = useAlerts({ state: 'open', limit: 100 });
   const places = placesFor(glance.may, counts?.open ?? 0);
@@ -26,6 +29,7 @@ export function CellarShell({ children }: { children: ReactNode }) {
         {children}
       </main>
       <PhoneTabs places={places} />
+      <Keeper />
     </>
   );
 }

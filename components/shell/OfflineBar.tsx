@@ -1,20 +1,46 @@
 'use client';
 
-import { clock } from '@/components/charts/zone';
+import Link from 'next/link';
+import { barWords } from '@/components/offline/words';
 import { StateMark } from '@/components/ui/StateMark';
+import { useNow } from '@/components/ui/now';
+import { useKeptSince } from '@/lib/client/kept';
 import type { LiveState } from '@/lib/client/live';
+import { useSendingUnsent, useUnsent } from '@/lib/client/unsent/use-unsent';
 
-/** Under the header while the line to the server is down; it goes away by itself. */
+/** Under the header while the line to the server is down, or something waits to be sent; it goes away by itself. */
 export function OfflineBar({ live, timeZone }: { live: LiveState; timeZone: string }) {
-  const since = live.state === 'offline' ? live.offlineSince : null;
+  const keptSince = useKeptSince();
+  const unsent = useUnsent();
+  const stopped = useSendingUnsent();
+  const now = useNow();
+  const words =
+    now === null
+      ? null
+      : barWords({
+          offlineSince: live.state === 'offline' ? live.offlineSince : null,
+          // While the line is being tried, what is kept is shown without a word for a moment.
+          keptSince: live.state === 'connecting' ? null : keptSince,
+          waiting: unsent.filter(({ state }) => state === 'waiting').length,
+          refused: unsent.filter(({ state }) => state === 'refused'),
+          stopped,
+          now,
+          timeZone,
+        });
+  const away = words?.tone === 'away';
   return (
     <div role="status">
-      {since !== null && (
-        <p className="type-label flex items-center gap-3 bg-ink px-(--margin) py-1.5 text-on">
-          <StateMark state="Silent" className="text-on!" />
-          <span>
-            <b className="font-semibold">Offline since {clock(since / 1000, timeZone)}.</b> Showing what was known then. It catches up by itself.
+      {words && (
+        <p className={`type-label flex flex-wrap items-center gap-x-3 gap-y-1 px-(--margin) py-1.5 ${away ? 'bg-ink text-on' : 'border-b bg-desk text-ink'}`}>
+          <StateMark state={away ? 'Silent' : 'Due'} className={away ? 'text-on!' : ''} />
+          <span className="min-w-0 flex-1">
+            <b className="font-semibold">{words.strong}</b> {words.rest}
           </span>
+          {words.link && (
+            <Link href={words.link.href} className={`underline underline-offset-4 ${away ? 'text-on' : 'text-ink'}`}>
+              {words.link.word}
+            </Link>
+          )}
         </p>
       )}
     </div>

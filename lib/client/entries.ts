@@ -1,12 +1,14 @@
 'use client';
 
 import type { z } from 'zod';
-import type { createEntry as createEntrySchema, EntryBody, entryList, RevisionList, UpdateEntry } from '../contracts/batches';
+import type { EntryBody, entryList, RevisionList, UpdateEntry } from '../contracts/batches';
 import { isOfBatch } from './batches';
 import { sendJson, withQuery } from './fetcher';
+import { sendOrKeep } from './unsent/send';
+import type { NewEntry } from './unsent/store';
 import { isPath, refresh, useResource } from './use-resource';
 
-export type NewEntry = z.input<typeof createEntrySchema>;
+export type { NewEntry };
 
 /** The log of a batch, newest first. */
 export function useEntries(batchId: string | null, query: { limit?: number; cursor?: string } = {}) {
@@ -16,11 +18,16 @@ export function useEntries(batchId: string | null, query: { limit?: number; curs
 
 const refreshBatch = (batchId: string) => refresh((path) => isOfBatch(batchId)(path) || isPath('/shelf')(path));
 
-/** Gives the entry a `client_id` where it has none, so that a second try after a lost answer keeps one entry. */
-export async function createEntry(batchId: string, input: NewEntry): Promise<EntryBody> {
-  const entry = await sendJson<EntryBody>('POST', `/batches/${batchId}/entries`, { ...input, client_id: input.client_id ?? crypto.randomUUID() });
+/**
+ * Gives the entry a `client_id` where it has none, so that a second try after a
+ * lost answer keeps one. Away from the network it is kept on this device and sent
+ * later: null then.
+ */
+export async function createEntry(batchId: string, input: NewEntry): Promise<EntryBody | null> {
+  const logged = await sendOrKeep(batchId, { ...input, client_id: input.client_id ?? crypto.randomUUID() });
+  if (!('sent' in logged)) return null;
   await refreshBatch(batchId);
-  return entry;
+  return logged.sent;
 }
 
 export async function removeEntry(batchId: string, entryId: string): Promise<void> {

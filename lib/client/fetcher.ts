@@ -1,4 +1,5 @@
 import type { Problem } from '../contracts/common';
+import { KEPT_HEADER, noteAnswer } from './kept';
 
 const BASE = '/api/v1';
 
@@ -36,23 +37,31 @@ function errorOf(response: Response, problem: Partial<Problem> | null): ClientEr
   );
 }
 
-async function request<T>(path: string, init: RequestInit): Promise<T> {
+async function request<T>(path: string, init: RequestInit, keptToo = true): Promise<T> {
   let response: Response;
   try {
     response = await fetch(`${BASE}${path}`, { ...init, headers: { accept: 'application/json', ...init.headers }, credentials: 'same-origin' });
   } catch {
-    throw new ClientError(0, 'unreachable', 'The server cannot be reached. Nothing was lost; try again when you are online.');
+    throw unreachable();
   }
+  const kept = response.headers.get(KEPT_HEADER);
+  if (kept !== null && !keptToo) throw unreachable();
   const body: unknown = response.status === 204 ? null : await response.json().catch(() => null);
   if (!response.ok) throw errorOf(response, body as Partial<Problem> | null);
+  if (init.method === 'GET') noteAnswer(path, kept);
   return body as T;
 }
+
+const unreachable = () => new ClientError(0, 'unreachable', 'The server cannot be reached. Nothing was lost; try again when you are online.');
 
 /** Reads a resource; `path` is below `/api/v1`. The server parses every answer by its schema, so that the type holds. */
 export const getJson = <T>(path: string): Promise<T> => request<T>(path, { method: 'GET' });
 
-export const sendJson = <T>(method: 'POST' | 'PATCH' | 'DELETE', path: string, body?: unknown): Promise<T> =>
-  request<T>(path, { method, ...(body === undefined ? {} : { headers: { 'content-type': 'application/json' }, body: JSON.stringify(body) }) });
+/** As `getJson`, and never what the device kept. */
+export const getFresh = <T>(path: string): Promise<T> => request<T>(path, { method: 'GET' }, false);
+
+export const sendJson = <T>(method: 'POST' | 'PATCH' | 'DELETE', path: string, body?: unknown, signal?: AbortSignal): Promise<T> =>
+  request<T>(path, { method, ...(signal && { signal }), ...(body === undefined ? {} : { headers: { 'content-type': 'application/json' }, body: JSON.stringify(body) }) });
 
 /** `path?a=1&b=2`, leaving out what is null or undefined; the same values always give the same string, so it serves as a cache key. */
 export function withQuery(path: string, query: Record<string, string | number | null | undefined>): string {

@@ -1,6 +1,8 @@
 'use client';
 
 import { signIn, signOut as endSession } from 'next-auth/react';
+import { dropDevice } from './push';
+import { forgetKept } from './worker';
 
 /** `code-needed` and `code-wrong`: the first factor was right, and the account has a second one. */
 export type SignInReason = 'wrong' | 'code-needed' | 'code-wrong' | 'throttled' | 'unavailable';
@@ -25,5 +27,8 @@ export const signInWithPassword = ({ stay, code = '', ...form }: { email: string
 /** Signs in by the secret of a mailed link, which is used up by it. */
 export const signInByLink = (token: string, code = '') => attempt('link', { token, code });
 
-/** Ends this sign-in and goes to the sign-in page. */
-export const signOut = () => endSession({ callbackUrl: '/sign-in' });
+/** Ends this sign-in and goes to the sign-in page; what was kept here of the person goes too. */
+export async function signOut(): Promise<void> {
+  await Promise.allSettled([dropDevice(), forgetKept()]);
+  await endSession({ callbackUrl: '/sign-in' });
+}

@@ -51,6 +51,8 @@ export function route<E extends Endpoint>(endpoint: E, handle: (context: RouteCo
 async function answer<E extends Endpoint>(endpoint: E, handle: (context: RouteContext<E>) => Promise<Answer<E['response']>>, request: NextRequest, rawParams: Promise<Record<string, string>> | undefined): Promise<Response> {
   const { session, actor } = await admit(endpoint, request);
   const headers = new Headers({ 'cache-control': 'private, no-store' });
+  // For the service worker, which keeps an answer under this name alone.
+  if (actor) headers.set('x-fallbright-for', `${actor.personId}.${actor.cellarId}`);
   const context = {
     request,
     session,

@@ -1,0 +1,65 @@
+'use client';
+
+import { useEffect, useState } from 'react';
+import { useLiveState } from '../use-live-changes';
+import { useMe } from '../me';
+import { sendUnsent, setWriter, type Stopped } from './send';
+import { allUnsent, onUnsentChange, type Unsent } from './store';
+
+/** What waits on this device, oldest first; of everybody who wrote here. */
+export function useAllUnsent(): Unsent[] {
+  const [entries, setEntries] = useState<Unsent[]>([]);
+  useEffect(() => {
+    let gone = false;
+    const look = () =>
+      void allUnsent().then(
+        (found) => !gone && setEntries(found),
+        () => undefined,
+      );
+    look();
+    const stop = onUnsentChange(look);
+    return () => {
+      gone = true;
+      stop();
+    };
+  }, []);
+  return entries;
+}
+
+/** What waits of the person here, of one batch or of all. An entry on its way from an open form is not among them. */
+export function useUnsent(batchId?: string): Unsent[] {
+  const { me } = useMe();
+  return useAllUnsent().filter((entry) => entry.personId === me?.person.id && entry.state !== 'sending' && (batchId === undefined || entry.batchId === batchId));
+}
+
+const AGAIN_MS = 15_000;
+
+/** Once, in the shell: sends what waits when the line is back, when the page is opened, and now and then. */
+export function useSendingUnsent(): Stopped {
+  const { me } = useMe();
+  const { state } = useLiveState();
+  const [stopped, setStopped] = useState<Stopped>(null);
+  const personId = me?.person.id;
+  const cellarId = me?.cellar.id;
+
+  useEffect(() => {
+    setWriter(personId && cellarId ? { personId, cellarId } : null);
+    if (!personId || !cellarId) return;
+    let gone = false;
+    const send = () =>
+      void sendUnsent().then(
+        (why) => !gone && setStopped(why),
+        () => undefined,
+      );
+    send();
+    const timer = setInterval(send, AGAIN_MS);
+    window.addEventListener('online', send);
+    return () => {
+      gone = true;
+      clearInterval(timer);
+      window.removeEventListener('online', send);
+    };
+  }, [personId, cellarId, state]);
+
+  return stopped;
+}
