@@ -16,7 +16,7 @@ import { vesselOf } from '@/components/vessel/describe';
 import { useBatch, useJudgement, useSeries, useVerdictChanges } from '@/lib/client/batches';
 import { useEntries } from '@/lib/client/entries';
 import { useMe } from '@/lib/client/me';
-import type { BatchBody, SeriesBody } from '@/lib/contracts/batches';
+import type { BatchBody, EntryBody, SeriesBody } from '@/lib/contracts/batches';
 import { BatchHead, PhoneFacts, PhoneHead } from './BatchHead';
 import { Calls } from './Calls';
 import { callRows, type CallRow } from './calls';
@@ -84,7 +84,7 @@ export function BatchPage({ id }: { id: string }) {
   return <Loading />;
 }
 
-type Opened = { form: 'entry'; kind: EntryKind; neck?: EntryDraft['neck'] } | { form: 'setup' } | null;
+type Opened = { form: 'entry'; kind: EntryKind; neck?: EntryDraft['neck']; entry?: EntryBody } | { form: 'setup' } | null;
 
 function Loaded({ batch }: { batch: BatchBody }) {
   const { me, may } = useMe();
@@ -131,6 +131,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
     work: may('entries.create') ? `/batches/${batch.id}/work` : null,
   };
   const first = rows[0] ?? null;
+  const known = { pitched: batch.pitched_at !== null, originalGravity: footing ? 1 + footing.effectiveOg / 1000 : batch.original_gravity };
   const close = () => setOpened(null);
   const trouble = [
     { what: 'The readings', error: series.error },
@@ -163,7 +164,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
           )}
         </div>
         <div className="wide:col-start-1 wide:row-start-2">
-          <Log batchId={batch.id} rows={entries ? log : null} now={now} timeZone={timeZone} onWrite={may('entries.create') ? () => open('observation') : null} />
+          <Log batchId={batch.id} rows={entries ? log : null} now={now} timeZone={timeZone} onWrite={may('entries.create') ? () => open('observation') : null} onCorrect={(entry) => setOpened({ form: 'entry', kind: entry.kind as EntryKind, entry })} />
         </div>
       </div>
       {!working && (
@@ -172,8 +173,8 @@ function Loaded({ batch }: { batch: BatchBody }) {
         </p>
       )}
       {opened?.form === 'entry' && (
-        <Sheet title={batch.name} onClose={close}>
-          <EntryForm batchId={batch.id} kind={opened.kind} neck={opened.neck} now={now} timeZone={timeZone} mayAlter={may('entries.alter')} onDone={close} />
+        <Sheet title={opened.entry ? `Correct the log of ${batch.name}` : batch.name} onClose={close}>
+          <EntryForm batchId={batch.id} kind={opened.kind} neck={opened.neck} entry={opened.entry} known={known} now={now} timeZone={timeZone} mayAlter={may('entries.alter')} onDone={close} />
         </Sheet>
       )}
       {opened?.form === 'setup' && (

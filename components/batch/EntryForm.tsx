@@ -2,18 +2,19 @@
 
 import { useId, useRef, useState, type FormEvent } from 'react';
 import { Button } from '@/components/ui/Button';
-import { Field, Select, TextField } from '@/components/ui/Field';
+import { Select } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
-import { createEntry } from '@/lib/client/entries';
+import { createEntry, updateEntry } from '@/lib/client/entries';
 import { ClientError } from '@/lib/client/fetcher';
-import { NECKS } from '@/lib/core/types';
-import { emptyDraft, entryOf, errorsOf, FIELDS, toLocal, type DraftErrors, type EntryDraft, type EntryKind } from './entry-form';
+import type { EntryBody } from '@/lib/contracts/batches';
+import { correctionOf, draftOfEntry, emptyDraft, entryOf, errorsOf, toLocal, type DraftErrors, type EntryDraft, type EntryKind } from './entry-form';
+import { EntryFields } from './EntryFields';
 import { focusFirstError } from './focus';
-import { NECK_WORDS } from './words';
+import type { MustKnown } from './refractometer';
 
 const KINDS: { kind: EntryKind; name: string; alters: boolean }[] = [
-  { kind: 'reading', name: 'Hydrometer reading', alters: false },
-  { kind: 'observation', name: 'What I see', alters: false },
+  { kind: 'reading', name: 'Gravity reading', alters: false },
+  { kind: 'observation', name: 'Looked, smelled, tasted', alters: false },
   { kind: 'note', name: 'Note', alters: false },
   { kind: 'neck', name: 'Change of neck', alters: false },
   { kind: 'addition', name: 'Addition', alters: true },
@@ -36,12 +37,22 @@ const DONE_WORDS: Record<EntryKind, string> = {
   pitch: 'Pitched',
 };
 
-const TEXT_LABEL: Partial<Record<EntryKind, string>> = { observation: 'What you see', note: 'Note', addition: 'What it was (yeast food, spice, acid …)' };
+/** What is told before it is done, where it could hurt somebody or the batch. */
+function cautionOf(draft: EntryDraft): { text: string; grave: boolean } | null {
+  if (draft.kind === 'neck' && draft.neck === 'bung') return { text: 'Never stop a vessel that still works: the pressure can break the glass. An airlock lets the gas out.', grave: true };
+  const sulphite = draft.kind === 'stabilise' || (draft.kind === 'addition' && draft.substance === 'sulphite');
+  if (sulphite) return { text: 'Sulphite: weigh it, keep to the packet’s and your country’s limits, air the room; it harms people with asthma. Name it on the label.', grave: false };
+  if (draft.kind === 'addition' && (draft.substance === 'sugar' || draft.substance === 'honey' || draft.substance === 'fruit')) return { text: 'A drink full of gas foams over when it goes in: add it slowly and leave room.', grave: false };
+  return null;
+}
 
 export interface EntryFormProps {
   batchId: string;
   kind: EntryKind;
   neck?: EntryDraft['neck'] | undefined;
+  /** The line to be corrected; absent: a new one. */
+  entry?: EntryBody | undefined;
+  known: MustKnown;
   /** Seconds since 1970. */
   now: number;
   timeZone: string;
@@ -50,83 +61,72 @@ export interface EntryFormProps {
   onDone: () => void;
 }
 
-/** One form for all that is logged; the kind decides what it asks. */
-export function EntryForm({ batchId, kind, neck = '', now, timeZone, mayAlter, onDone }: EntryFormProps) {
-  const [draft, setDraft] = useState<EntryDraft>(() => ({ ...emptyDraft(kind, now, timeZone), neck }));
+/** One form for all that is logged, and for its correction; the kind decides what it asks. */
+export function EntryForm({ batchId, kind, neck = '', entry, known, now, timeZone, mayAlter, onDone }: EntryFormProps) {
+  const [draft, setDraft] = useState<EntryDraft>(() => (entry ? draftOfEntry(entry, kind, timeZone) : { ...emptyDraft(kind, now, timeZone), neck }));
   const [errors, setErrors] = useState<DraftErrors>({});
   const [failed, setFailed] = useState<string | null>(null);
   const [sending, setSending] = useState(false);
   const clientId = useRef<string | null>(null);
   const form = useId();
+  const change = (part: Partial<EntryDraft>) => setDraft((before) => ({ ...before, ...part }));
+  const caution = cautionOf(draft);
 
-  const set = (field: keyof EntryDraft) => (event: { target: { value: string } }) => setDraft((before) => ({ ...before, [field]: event.target.value }));
-
-  async function send(event: FormEvent) {
-    event.preventDefault();
+  /** Null: there is something wrong with it. */
+  function request(): (() => Promise<unknown>) | null {
+    if (entry) {
+      const made = correctionOf(draft, entry, timeZone);
+      setErrors(made.errors ?? {});
+      if (made.errors) return null;
+      const { change: correction } = made;
+      return correction ? () => updateEntry(batchId, entry.id, correction) : () => Promise.resolve();
+    }
     clientId.current ??= crypto.randomUUID();
     const made = entryOf(draft, timeZone, clientId.current);
     setErrors(made.errors ?? {});
+    return made.errors ? null : () => createEntry(batchId, made.entry);
+  }
+
+  async function send(event: FormEvent) {
+    event.preventDefault();
     setFailed(null);
-    if (made.errors) {
+    const act = request();
+    if (!act) {
       focusFirstError();
       return;
     }
     setSending(true);
     try {
-      await createEntry(batchId, made.entry);
+      await act();
       onDone();
     } catch (error) {
       const told = error instanceof ClientError ? error : null;
       const fields = errorsOf(told?.fields ?? {});
       setErrors(fields);
       if (Object.keys(fields).length === 0) setFailed(told?.message ?? 'It was not saved. Try again; saving twice keeps one.');
+      else focusFirstError();
       setSending(false);
     }
   }
 
-  const fields: Partial<Record<keyof EntryDraft, React.ReactNode>> = {
-    gravity: <Field label={draft.kind === 'addition' || draft.kind === 'top_up' ? 'Gravity of what went in' : 'Gravity as read'} unit="SG" inputMode="decimal" placeholder="1.048" autoComplete="off" value={draft.gravity} onChange={set('gravity')} error={errors.gravity} />,
-    temperature: <Field label="Sample temperature" unit="°C" inputMode="decimal" autoComplete="off" value={draft.temperature} onChange={set('temperature')} error={errors.temperature} hint="The reading is corrected to 20 °C. Empty: kept as read." />,
-    calibratedAt: <Field label="Hydrometer made for" unit="°C" inputMode="decimal" autoComplete="off" value={draft.calibratedAt} onChange={set('calibratedAt')} error={errors.calibratedAt} hint="Printed on it: 20, often 15.6 on older ones." />,
-    volume: <Field label={draft.kind === 'addition' || draft.kind === 'top_up' ? 'Liquid that went in' : 'Volume in the vessel now'} unit="L" inputMode="decimal" autoComplete="off" value={draft.volume} onChange={set('volume')} error={errors.volume} />,
-    sugar: <Field label="Sugar" unit="g" inputMode="decimal" autoComplete="off" value={draft.sugar} onChange={set('sugar')} error={errors.sugar} />,
-    fruit: <Field label="Fruit or other pieces" unit="g" inputMode="decimal" autoComplete="off" value={draft.fruit} onChange={set('fruit')} error={errors.fruit} />,
-    neck: (
-      <Select label="The neck now" value={draft.neck} onChange={set('neck')} error={errors.neck}>
-        <option value="">{draft.kind === 'neck' ? 'Choose' : 'As it was'}</option>
-        {NECKS.map((name) => (
-          <option key={name} value={name}>
-            {NECK_WORDS[name]}
-          </option>
-        ))}
-      </Select>
-    ),
-    text: <TextField label={TEXT_LABEL[draft.kind] ?? 'Note'} value={draft.text} onChange={set('text')} error={errors.text} rows={draft.kind === 'note' || draft.kind === 'observation' ? 5 : 2} maxLength={2000} />,
-    at: <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={draft.at} onChange={set('at')} error={errors.at} />,
-  };
-
   return (
     <form id={form} onSubmit={(event) => void send(event)} noValidate className="flex flex-col gap-4">
-      <Select label="What happened" value={draft.kind} onChange={(event) => setDraft((before) => ({ ...before, kind: event.target.value as EntryKind }))}>
-        {KINDS.filter((item) => mayAlter || !item.alters).map((item) => (
-          <option key={item.kind} value={item.kind}>
-            {item.name}
-          </option>
-        ))}
-      </Select>
-      <div className="grid grid-cols-2 gap-x-3 gap-y-4">
-        {FIELDS[draft.kind].map((field) => (
-          <div key={field} className={field === 'temperature' || field === 'calibratedAt' || field === 'sugar' || field === 'fruit' ? '' : 'col-span-2'}>
-            {fields[field]}
-          </div>
-        ))}
-      </div>
-      {draft.kind === 'neck' && draft.neck === 'bung' && <p className="type-reason border-l-[3px] border-madder pl-3">Never stop a vessel that still works: the pressure can break the glass. An airlock lets the gas out.</p>}
-      {draft.kind === 'stabilise' && <p className="type-reason border-l-[3px] border-ochre pl-3">Sulphite: weigh it, keep to the packet’s and your country’s limits, air the room; it harms people with asthma. Name it on the label.</p>}
+      {!entry && (
+        <Select label="What happened" value={draft.kind} onChange={(event) => change({ kind: event.target.value as EntryKind })}>
+          {KINDS.filter((item) => mayAlter || !item.alters).map((item) => (
+            <option key={item.kind} value={item.kind}>
+              {item.name}
+            </option>
+          ))}
+        </Select>
+      )}
+      <EntryFields draft={draft} errors={errors} latest={toLocal(now + 600, timeZone)} known={known} onChange={change} />
+      {caution && <p className={`type-reason border-l-[3px] pl-3 ${caution.grave ? 'border-madder' : 'border-ochre'}`}>{caution.text}</p>}
       {failed && <FormError>{failed}</FormError>}
-      <div className="flex justify-end gap-2">
+      {/* Stays under the thumb however long the form is. */}
+      <div className="sticky bottom-0 -mx-(--margin) flex justify-end gap-2 border-t bg-sheet px-(--margin) py-3 max-strip:[&>*]:flex-1">
         <Button look="first" type="submit" disabled={sending}>
-          {sending ? 'Saving' : DONE_WORDS[draft.kind]}
+          {sending ? 'Saving' : entry ? 'Correct it' : DONE_WORDS[draft.kind]}
         </Button>
       </div>
     </form>

@@ -2,8 +2,8 @@ import type { VerdictChangeList } from '@/lib/contracts/assessment';
 import type { EntryBody } from '@/lib/contracts/batches';
 import { CALL_NAMES } from '@/lib/core/types';
 import { clock, wallTime, MONTHS } from '@/components/charts/zone';
-import { degrees, grams, gravityText, litres } from './figures';
-import { NECK_WORDS } from './words';
+import { entryWords } from './entry-words';
+import { gravityText } from './figures';
 
 export const LOG_FILTERS = ['all', 'readings', 'additions', 'notes', 'calls'] as const;
 export type LogFilter = (typeof LOG_FILTERS)[number];
@@ -21,56 +21,10 @@ export interface LogRow {
   own: string | null;
   figure: string | null;
   who: string;
-  /** The entry may be taken back by the reader. */
+  /** The reader may correct it or take it back. */
   mine: boolean;
-}
-
-/** `Added 120 g sugar and 0.3 L at 1.031.` */
-function additionWords(entry: EntryBody): string {
-  const parts = [
-    entry.sugar_g ? `${grams(entry.sugar_g)} sugar` : null,
-    entry.fruit_g ? `${grams(entry.fruit_g)} fruit` : null,
-    entry.volume_l ? `${litres(entry.volume_l)} liquid${entry.gravity === null ? '' : ` at ${gravityText(entry.gravity)}`}` : null,
-  ].filter((part) => part !== null);
-  if (parts.length === 0) return 'Something added.';
-  return `Added ${parts.length > 1 ? `${parts.slice(0, -1).join(', ')} and ${parts.at(-1)}` : parts[0]}.`;
-}
-
-function readingWords(entry: EntryBody): string {
-  const sample = entry.temperature_c === null ? 'Hydrometer' : `Hydrometer, sample at ${degrees(entry.temperature_c)}`;
-  const corrected = entry.gravity !== null && entry.gravity_read !== null && gravityText(entry.gravity) !== gravityText(entry.gravity_read);
-  return corrected ? `${sample}, corrected from ${gravityText(entry.gravity_read!)}.` : `${sample}.`;
-}
-
-/** What happened, in the log's words; the person's own words stand apart. */
-export function entryWords(entry: EntryBody): string {
-  switch (entry.kind) {
-    case 'pitch':
-      return entry.volume_l === null ? 'Pitched.' : `Pitched, ${litres(entry.volume_l)}.`;
-    case 'reading':
-      return readingWords(entry);
-    case 'neck':
-      return entry.neck === null ? 'Neck changed.' : entry.neck === 'open' ? 'Neck opened.' : `${NECK_WORDS[entry.neck][0]!.toUpperCase()}${NECK_WORDS[entry.neck].slice(1)} put on.`;
-    case 'rack':
-      return entry.volume_l === null ? 'Racked.' : `Racked, ${litres(entry.volume_l)} came over.`;
-    case 'addition':
-      return additionWords(entry);
-    case 'top_up':
-      return entry.volume_l === null ? 'Topped up.' : `Topped up with ${litres(entry.volume_l)}${entry.gravity === null ? '' : ` at ${gravityText(entry.gravity)}`}.`;
-    case 'stabilise':
-      return 'Stabilised.';
-    case 'fining':
-      return entry.detail?.dose === 'b' ? 'Fined, second dose.' : entry.detail?.dose === 'a' ? 'Fined, first dose.' : 'Fined.';
-    case 'split':
-      return entry.volume_l === null ? 'Split.' : `Split, ${litres(entry.volume_l)} went over.`;
-    case 'blend':
-      return entry.volume_l === null ? 'Blended.' : `Blended, ${litres(entry.volume_l)}.`;
-    case 'bottling':
-      return entry.volume_l === null ? 'Bottled.' : `Bottled, ${litres(entry.volume_l)}.`;
-    case 'observation':
-    case 'note':
-      return '';
-  }
+  /** The line itself; null for what the program came to think. */
+  entry: EntryBody | null;
 }
 
 /** Where the person said it in their own words, ours are kept only for their figures. */
@@ -88,6 +42,7 @@ const rowOf = (entry: EntryBody): LogRow => ({
   figure: (entry.kind === 'reading' || entry.kind === 'pitch') && entry.gravity !== null ? gravityText(entry.gravity) : null,
   who: entry.person?.name ?? 'Fallbright',
   mine: entry.mine,
+  entry,
 });
 
 /**
@@ -100,7 +55,7 @@ function callRows(changes: VerdictChangeList['items']): LogRow[] {
     const first = change.changed.length === CALL_NAMES.length;
     const said = change.changed.map((name) => change.assessment.calls[name]).filter((call) => call.verdict !== 'unknown' && !(first && call.verdict === 'no'));
     if (said.length === 0) return [];
-    return [{ id: `call ${change.at}`, at: Date.parse(change.at) / 1000, kind: 'call' as const, text: said.map((call) => call.headline).join(' '), own: null, figure: null, who: 'Fallbright', mine: false }];
+    return [{ id: `call ${change.at}`, at: Date.parse(change.at) / 1000, kind: 'call' as const, text: said.map((call) => call.headline).join(' '), own: null, figure: null, who: 'Fallbright', mine: false, entry: null }];
   });
 }
 

@@ -1,5 +1,5 @@
 import type { DrinkKind, Neck, Stage } from '@/lib/core/types';
-import type { BatchBody } from '@/lib/contracts/batches';
+import type { BatchBody, CLARITIES, FOAMS, SUBSTANCES } from '@/lib/contracts/batches';
 import { litres } from './figures';
 
 export const KIND_WORDS: Record<DrinkKind, string> = { beer: 'beer', cider: 'cider or perry', mead: 'mead', wine: 'country wine' };
@@ -26,3 +26,25 @@ export function dayOf(pitchedAt: string | null, nowS: number): number | null {
   const days = (nowS - Date.parse(pitchedAt) / 1000) / 86_400;
   return days < 0 ? null : Math.floor(days) + 1;
 }
+
+export const CLARITY_WORDS: Record<(typeof CLARITIES)[number], string> = { cloudy: 'cloudy', hazy: 'hazy', clearing: 'clearing', bright: 'bright' };
+export const FOAM_WORDS: Record<(typeof FOAMS)[number], string> = { none: 'none', ring: 'a ring', cover: 'a cover', at_neck: 'at the neck' };
+export const SUBSTANCE_WORDS: Record<(typeof SUBSTANCES)[number], string> = {
+  sugar: 'sugar',
+  honey: 'honey',
+  fruit: 'fruit',
+  juice: 'juice, must or syrup',
+  nutrient: 'yeast nutrient',
+  acid: 'acid',
+  chalk: 'chalk',
+  tannin: 'tannin',
+  enzyme: 'enzyme',
+  sulphite: 'sulphite',
+  sorbate: 'sorbate',
+  sweetener: 'sweetener',
+  fining: 'fining',
+  yeast: 'yeast',
+  spice: 'spice',
+  water: 'water',
+  other: 'something else',
+};

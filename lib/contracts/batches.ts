@@ -127,6 +127,8 @@ export const entryDetail = z.object({
   instrument: z.enum(INSTRUMENTS).nullable().optional(),
   /** What a refractometer showed; the gravity is reckoned from it. */
   brix: measure(0, 60, '°Bx'),
+  /** Taken for the original gravity that nobody had told. Set by the program. */
+  as_original_gravity: z.boolean().nullable().optional(),
   ph: measure(2, 8, ''),
   titratable_acid_g_per_l: measure(0, 30, 'g/L'),
   free_sulphite_mg_l: measure(0, 500, 'mg/L'),
@@ -220,6 +222,7 @@ export const entrySchema = z.object({
   /** As read, before the correction. */
   gravity_read: z.number().nullable(),
   temperature_c: z.number().nullable(),
+  calibrated_at_c: z.number().nullable(),
   neck: z.enum(NECKS).nullable(),
   volume_l: z.number().nullable(),
   sugar_g: z.number().nullable(),

@@ -5,7 +5,6 @@ import { authorize } from '@/lib/auth/authorize';
 import type { Action, Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
 import type { CreateEntry, EntryBody, LOGGED_KINDS } from '@/lib/contracts/batches';
-import { asSugar } from '@/lib/core/additions/effect';
 import { correctHydrometer } from '@/lib/core/gravity/hydrometer';
 import { correctBrix, gravityByRefractometer, sgOfBrix } from '@/lib/core/gravity/refractometer';
 import { ConflictError, InvalidError } from '@/lib/errors';
@@ -13,9 +12,9 @@ import { auditBy } from '../audit/write';
 import { loadBatch } from '../batches/load';
 import { notifyChange } from '../changes';
 import { ledgerOf } from '../drink/ledger';
-import { ingredientNamed, ownIngredients } from '../drink/load';
+import { broughtBy } from './brought';
 import { answerJobs } from '../jobs/answer';
-import { applyEntry } from './effects';
+import { applyEntry, takeAsOriginal } from './effects';
 import { namesOf } from './names';
 import { presentEntry } from './present';
 
@@ -62,16 +61,11 @@ async function byRefractometer(batch: Batch, shown: number, sampleC: number | nu
   return gravity;
 }
 
-/** Sugar or fruit that a weighed ingredient brings, where the person did not tell the sugar itself. */
-async function broughtBy(actor: Actor, input: CreateEntry, transaction: Transaction): Promise<{ sugarG: number | null; fruitG: number | null }> {
-  const told = { sugarG: input.sugar_g, fruitG: input.fruit_g };
-  const { ingredient: key, grams } = input.detail ?? {};
-  if (input.kind !== 'addition' || !key || !grams || told.sugarG !== null || told.fruitG !== null) return told;
-  const ingredient = ingredientNamed(key, await ownIngredients(actor.cellarId, [key], transaction));
-  if (!ingredient) throw new InvalidError('There is no such ingredient.', { 'detail.ingredient': ['is not in the catalogue'] });
-  if (ingredient.kind === 'fruit') return { sugarG: null, fruitG: grams };
-  const brought = asSugar(ingredient, grams);
-  return { sugarG: brought.what === 'sugar' && brought.sugarG > 0 ? brought.sugarG : null, fruitG: null };
+/** What was told in detail, with what the program made of it. */
+function kept({ detail, gravity }: CreateEntry, original: boolean): CreateEntry['detail'] {
+  const { as_original_gravity: _, ...told } = detail ?? {};
+  const made = { ...told, ...(typeof told.brix === 'number' && gravity === null && { instrument: 'refractometer' as const }), ...(original && { as_original_gravity: true }) };
+  return Object.keys(made).length > 0 ? made : detail && null;
 }
 
 /**
@@ -94,6 +88,7 @@ export async function createEntry(actor: Actor, batchId: string, input: CreateEn
     async function write(): Promise<Entry> {
       await applyEntry(batch, input, transaction);
       const gravity = await gravityOf(batch, input, transaction);
+      const original = await takeAsOriginal(batch, { kind: input.kind, at, gravity, detail: input.detail }, transaction);
       const { sugarG, fruitG } = await broughtBy(actor, input, transaction);
       const created = await Entry.create(
         {
@@ -110,7 +105,7 @@ export async function createEntry(actor: Actor, batchId: string, input: CreateEn
           volumeL: input.volume_l,
           sugarG,
           fruitG,
-          detail: typeof input.detail?.brix === 'number' && input.gravity === null ? { ...input.detail, instrument: 'refractometer' } : input.detail,
+          detail: kept(input, original),
           personId: actor.personId,
           clientId: input.client_id,
         },

@@ -1,6 +1,8 @@
 import { Op, type Transaction } from 'sequelize';
 import { Entry, type Batch } from '@/db/models';
-import type { CreateEntry } from '@/lib/contracts/batches';
+import { batchState } from '@/db/queries/batch-states';
+import type { AssessmentBody } from '@/lib/contracts/assessment';
+import type { CreateEntry, EntryDetail } from '@/lib/contracts/batches';
 import { InvalidError } from '@/lib/errors';
 import { volumeAfter as after } from '../drink/ledger';
 
@@ -34,6 +36,30 @@ export async function applyEntry(batch: Batch, entry: CreateEntry, transaction: 
     if (volume > batch.vesselL + LITRES_SLACK) throw new InvalidError('The vessel cannot hold it.', { volume_l: [`the vessel holds ${batch.vesselL} L`] });
     if (await isLatest(batch.id, at, VOLUME_KINDS, transaction)) batch.set('volumeL', Math.min(volume, batch.vesselL));
   }
+  await batch.save({ transaction });
+}
+
+/** As in the judgement: within this of the pitch a reading still shows the must. */
+const BEFORE_THE_FALL_MS = 24 * 3_600_000;
+
+/** A reading of the must stands in for an original gravity that nobody told, unless the fall had begun by then. True where it did. */
+export async function takeAsOriginal(batch: Batch, { kind, at, gravity, detail }: Pick<Entry, 'kind' | 'at' | 'gravity'> & { detail: EntryDetail | null }, transaction: Transaction): Promise<boolean> {
+  if (kind !== 'reading' || gravity === null || gravity <= 1.005 || batch.originalGravity !== null || batch.pitchedAt === null || detail?.instrument === 'refractometer') return false;
+  if (Math.abs(at.getTime() - batch.pitchedAt.getTime()) >= BEFORE_THE_FALL_MS) return false;
+  const started = (await batchState<AssessmentBody>(batch.id, transaction))?.assessment.calls.started;
+  if (started?.verdict === 'yes' && (started.since === null || Date.parse(started.since) <= at.getTime())) return false;
+  batch.set('originalGravity', gravity);
+  await batch.save({ transaction });
+  return true;
+}
+
+/** The original gravity follows the line of the log that it was taken from; `after` is null where that was taken back. */
+export async function followOriginal(batch: Batch, before: Pick<Entry, 'kind' | 'gravity' | 'detail'>, after: number | null, transaction: Transaction): Promise<void> {
+  const from = before.kind === 'pitch' || (before.detail as EntryDetail | null)?.as_original_gravity === true;
+  if (!from || before.gravity === null || batch.originalGravity !== before.gravity) return;
+  // A pitch taken back leaves what was told of the must.
+  if (after === null && before.kind === 'pitch') return;
+  batch.set('originalGravity', after);
   await batch.save({ transaction });
 }
 

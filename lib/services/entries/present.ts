@@ -19,6 +19,7 @@ export function presentEntry(entry: Entry, actor: Actor, names: ReadonlyMap<stri
     gravity: entry.gravity,
     gravity_read: entry.gravityRead,
     temperature_c: entry.temperatureC,
+    calibrated_at_c: entry.calibratedAtC,
     neck: entry.neck,
     volume_l: entry.volumeL,
     sugar_g: entry.sugarG,

@@ -8,7 +8,7 @@ import { ConflictError, ForbiddenError, NotFoundError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { loadBatch } from '../batches/load';
 import { notifyChange } from '../changes';
-import { settleBatch } from './effects';
+import { followOriginal, settleBatch } from './effects';
 import { mayRemove } from './present';
 import { partOfWork } from './work';
 
@@ -24,6 +24,7 @@ export async function removeEntry(actor: Actor, batchId: string, entryId: string
     if (work) throw new ConflictError(`This line is part of ${work}, and cannot be taken back by itself.`);
     await entry.update({ removedAt: new Date(clock.now()), removedBy: actor.personId }, { transaction });
     await settleBatch(batch, entry, transaction);
+    await followOriginal(batch, entry, null, transaction);
     await auditBy(actor, 'entry.removed', entryId, { batch: batchId, kind: entry.kind }, transaction);
     await notifyChange({ cellar: actor.cellarId, kind: 'entry', batch: batchId }, transaction);
   });

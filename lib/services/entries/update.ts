@@ -11,7 +11,8 @@ import { loadBatch } from '../batches/load';
 import { notifyChange } from '../changes';
 import { iso } from '../iso';
 import { gravityOf } from './create';
-import { settleBatch } from './effects';
+import { broughtBy } from './brought';
+import { followOriginal, settleBatch } from './effects';
 import { namesOf } from './names';
 import { mayRemove, presentEntry } from './present';
 import { partOfWork } from './work';
@@ -50,12 +51,13 @@ export async function updateEntry(actor: Actor, batchId: string, entryId: string
     if (work && Object.keys(input).some((field) => field !== 'text')) throw new ConflictError(`This line is part of ${work}: only its words can be corrected.`);
 
     const was = before(entry);
-    const then = { kind: entry.kind, neck: entry.neck, volumeL: entry.volumeL };
+    const then = { kind: entry.kind, neck: entry.neck, volumeL: entry.volumeL, gravity: entry.gravity, detail: entry.detail };
     const kind = LOGGED_KINDS.find((item) => item === entry.kind);
     const read = input.gravity !== undefined ? input.gravity : entry.gravityRead;
     const temperature = input.temperature_c !== undefined ? input.temperature_c : entry.temperatureC;
     const calibrated = input.calibrated_at_c !== undefined ? input.calibrated_at_c : entry.calibratedAtC;
-    const detail = input.detail !== undefined ? input.detail : was.detail;
+    // What the program made of it is not the writer's to change.
+    const detail = input.detail === undefined ? was.detail : withMark(input.detail, was.detail?.as_original_gravity);
     const remeasured = input.gravity !== undefined || input.temperature_c !== undefined || input.calibrated_at_c !== undefined || input.detail !== undefined;
     entry.set({
       at: input.at === undefined ? entry.at : new Date(input.at),
@@ -71,15 +73,25 @@ export async function updateEntry(actor: Actor, batchId: string, entryId: string
       revisedAt: now,
     });
     if (kind && remeasured) entry.set('gravity', await gravityOf(batch, { kind, gravity: read, temperature_c: temperature, calibrated_at_c: calibrated, detail }, transaction));
+    // Sugar that was reckoned from what was weighed is reckoned anew.
+    if (kind && input.detail !== undefined && input.sugar_g === undefined && input.fruit_g === undefined && (detail?.ingredient || was.detail?.ingredient)) {
+      entry.set(await broughtBy(actor, { kind, sugar_g: null, fruit_g: null, detail }, transaction));
+    }
     check(entry);
     if ((entry.volumeL ?? 0) > batch.vesselL) throw new InvalidError('The vessel cannot hold it.', { volume_l: [`the vessel holds ${batch.vesselL} L`] });
     await EntryRevision.create({ cellarId: actor.cellarId, entryId, at: now, personId: actor.personId, before: was }, { transaction });
     await entry.save({ transaction });
     for (const changed of [then, entry]) await settleBatch(batch, changed, transaction);
+    await followOriginal(batch, then, entry.gravity, transaction);
     await auditBy(actor, 'entry.updated', entryId, { batch: batchId, kind: entry.kind, fields: Object.keys(input) }, transaction);
     await notifyChange({ cellar: actor.cellarId, kind: 'entry', batch: batchId }, transaction);
     return presentEntry(entry, actor, await namesOf([entry.personId], transaction));
   });
+}
+
+function withMark(detail: Before['detail'], mark: boolean | null | undefined): Before['detail'] {
+  const { as_original_gravity: _, ...told } = detail ?? {};
+  return mark ? { ...told, as_original_gravity: true } : detail && told;
 }
 
 /** What it says after the correction has to make sense as if it were written anew. */

@@ -62,6 +62,7 @@ export const entry = (over: Partial<EntryBody> = {}): EntryBody => ({
   gravity: null,
   gravity_read: null,
   temperature_c: null,
+  calibrated_at_c: null,
   neck: null,
   volume_l: null,
   sugar_g: null,

@@ -1,0 +1,68 @@
+import { describe, expect, it } from 'vitest';
+import { Batch, Entry } from '@/db/models';
+import { createEntry as entryForm, updateEntry as updateForm } from '@/lib/contracts/batches';
+import { createEntry } from '@/lib/services/entries/create';
+import { listEntries } from '@/lib/services/entries/list';
+import { removeEntry } from '@/lib/services/entries/remove';
+import { updateEntry } from '@/lib/services/entries/update';
+import { clockAt, isoAt, NOON } from '../support/cellar';
+import { useDatabase } from '../support/database';
+import { buildBatch, buildMember } from '../support/factories';
+
+useDatabase();
+
+const HOUR = 3_600_000;
+const clock = clockAt();
+const log = (input: Record<string, unknown>) => entryForm.parse({ at: isoAt(NOON), ...input });
+
+async function untold(pitchedHoursAgo: number) {
+  const brewer = await buildMember('brewer');
+  const batch = await buildBatch({ cellarId: brewer.cellarId, pitchedAt: new Date(NOON - pitchedHoursAgo * HOUR), originalGravity: null });
+  const og = async () => (await Batch.findByPk(batch.id, { rejectOnEmpty: true })).originalGravity;
+  return { brewer, batch, og };
+}
+
+describe('an original gravity that nobody told', () => {
+  it('is taken from a hydrometer reading of the first day, which says so', async () => {
+    const { brewer, batch, og } = await untold(6);
+    const entry = await createEntry(brewer, batch.id, log({ kind: 'reading', gravity: 1.052 }), clock);
+    expect(await og()).toBe(1.052);
+    expect(entry.detail).toMatchObject({ as_original_gravity: true });
+    const later = await createEntry(brewer, batch.id, log({ kind: 'reading', gravity: 1.048 }), clock);
+    expect(await og()).toBe(1.052);
+    expect(later.detail).toBeNull();
+  });
+
+  it('follows the correction of that reading, and goes with it', async () => {
+    const { brewer, batch, og } = await untold(6);
+    const entry = await createEntry(brewer, batch.id, log({ kind: 'reading', gravity: 1.062 }), clock);
+    await updateEntry(brewer, batch.id, entry.id, updateForm.parse({ gravity: 1.052, detail: { ph: 3.6 } }), clock);
+    expect(await og()).toBe(1.052);
+    expect((await listEntries(brewer, batch.id, { limit: 5 })).items[0]?.detail).toEqual({ ph: 3.6, as_original_gravity: true });
+    await removeEntry(brewer, batch.id, entry.id, clock);
+    expect(await og()).toBeNull();
+  });
+
+  it('is not taken from a late reading, from a refractometer, or over one that was told', async () => {
+    const late = await untold(40);
+    await createEntry(late.brewer, late.batch.id, log({ kind: 'reading', gravity: 1.03 }), clock);
+    expect(await late.og()).toBeNull();
+    const told = await untold(6);
+    await told.batch.update({ originalGravity: 1.06 });
+    const entry = await createEntry(told.brewer, told.batch.id, log({ kind: 'reading', gravity: 1.052, detail: { as_original_gravity: true } }), clock);
+    expect(await told.og()).toBe(1.06);
+    expect(entry.detail).not.toMatchObject({ as_original_gravity: true });
+  });
+});
+
+describe('sugar that is reckoned from what was weighed', () => {
+  it('is reckoned anew with another weight, and gone with another substance', async () => {
+    const { brewer, batch } = await untold(6);
+    const entry = await createEntry(brewer, batch.id, log({ kind: 'addition', detail: { substance: 'honey', ingredient: 'honey', grams: 300 } }), clock);
+    expect(entry.sugar_g).toBeGreaterThan(200);
+    const heavier = await updateEntry(brewer, batch.id, entry.id, updateForm.parse({ detail: { substance: 'honey', ingredient: 'honey', grams: 600 } }), clock);
+    expect(heavier.sugar_g).toBeCloseTo(2 * entry.sugar_g!, 6);
+    await updateEntry(brewer, batch.id, entry.id, updateForm.parse({ detail: { substance: 'acid', grams: 6 } }), clock);
+    expect(await Entry.findByPk(entry.id)).toMatchObject({ sugarG: null, fruitG: null });
+  });
+});
