@@ -6,12 +6,14 @@ import { Field, Select } from '@/components/ui/Field';
 import type { DrinkBody } from '@/lib/contracts/family';
 import type { DrinkKind } from '@/lib/core/types';
 import { ACIDS, acidDose, tanninDose, USUAL_ACID, USUAL_PH, type Acid } from '@/lib/core/additions/acid';
-import { NUTRIENTS, nutrientPlan, type Nutrient } from '@/lib/core/additions/nutrients';
+import { FED_LATELY_MS, NUTRIENTS, nutrientPlan, type Nutrient } from '@/lib/core/additions/nutrients';
 import { MOLECULAR_TARGETS, SULPHITE_SALTS, sulphiteDose, type SulphiteSalt } from '@/lib/core/sulphite/dose';
 import { Dose, type Told } from './Dose';
 
 const isNumber = (value: number | null | undefined): value is number => typeof value === 'number' && Number.isFinite(value);
 const figure = (value: number | null | undefined, digits: number) => (isNumber(value) ? String(Number(value.toFixed(digits))) : '');
+
+const fedLately = (fedAt: string | null, at: string): boolean => fedAt !== null && Date.parse(at) - Date.parse(fedAt) < FED_LATELY_MS;
 
 interface Props {
   batchId: string;
@@ -38,19 +40,21 @@ function Nutrients({ batchId, drink, mayLog }: Props) {
           abvPercent: drink.strength?.balling.value.value ?? 0,
         });
   const due = plan?.portions.find((portion) => portion.state === 'due') ?? null;
+  const lately = fedLately(drink.nitrogen.last_fed_at, drink.at);
   const later = plan?.portions.filter((portion) => portion.state === 'later' && portion.grams > 0) ?? [];
   const told: Told | null = plan && {
     says: due ? `Now ${due.grams} g of ${NUTRIENTS[nutrient].name}` : 'Nothing is due now.',
     grams: due?.grams ?? 0,
     substance: 'nutrient',
     name: NUTRIENTS[nutrient].name,
+    ingredient: nutrient === 'dap' ? 'dap' : 'complex-nutrient',
     how: plan.totalG.how,
     facts: [
       `${Math.round(100 * plan.sugarUsedShare)} % of the sugar is used. ${Math.round(plan.missingMgL)} mg/L of nitrogen is missing; ${plan.totalG.value} g in all.`,
       ...later.map((portion) => `${portion.grams} g at ${portion.atGravity.toFixed(3)}, with ${Math.round(100 * portion.atShare)} % of the sugar gone.`),
     ],
     cautions: plan.cautions,
-    none: due && due.grams > 0 ? null : plan.missingMgL <= 0 ? 'It has enough nitrogen.' : 'No nutrient now.',
+    none: lately ? 'Fed in the last 12 hours.' : due && due.grams > 0 ? null : plan.missingMgL <= 0 ? 'It has enough nitrogen.' : 'No nutrient now.',
   };
   return (
     <Dose title="Nutrient" batchId={batchId} mayLog={mayLog} told={told} needs={og === null ? 'Log the original gravity first.' : 'The yeast’s need of nitrogen comes with the must sheet; this batch was started without one.'}>
@@ -81,6 +85,7 @@ function Sulphite({ batchId, drink, mayLog }: Props) {
     grams: dose.saltG.value,
     substance: 'sulphite',
     name: SULPHITE_SALTS[salt].name,
+    ingredient: salt === 'sodium_metabisulphite' ? 'sodium-metabisulphite' : 'potassium-metabisulphite',
     how: dose.saltG.how,
     facts: [
       `Needs ${Math.round(dose.freeNeededMgL.value)} mg/L free for ${target} mg/L molecular. Total after it: ${Math.ceil(dose.totalAfterMgL.value)} mg/L.`,
@@ -107,6 +112,9 @@ function Sulphite({ batchId, drink, mayLog }: Props) {
   );
 }
 
+/** As the catalogue has them. */
+const ACID_KEYS: Partial<Record<Acid, string>> = { tartaric: 'tartaric-acid', malic: 'malic-acid', citric: 'citric-acid' };
+
 function Acids({ batchId, drink, mayLog, kind }: Props & { kind: DrinkKind }) {
   const usual = kind === 'beer' ? null : USUAL_ACID[kind];
   const [now, setNow] = useState(() => figure(drink.titratable_acid_g_per_l?.value, 1));
@@ -120,6 +128,7 @@ function Acids({ batchId, drink, mayLog, kind }: Props & { kind: DrinkKind }) {
     grams: dose.grams.value,
     substance: dose.of.startsWith('chalk') ? 'chalk' : 'acid',
     name: dose.of,
+    ingredient: dose.of.startsWith('chalk') ? null : (ACID_KEYS[acid] ?? null),
     how: dose.grams.how,
     facts: [`A drink usually stands at pH ${USUAL_PH.lo} to ${USUAL_PH.hi}.${usual ? ` ${kind === 'wine' ? 'Country wine' : kind === 'mead' ? 'Mead' : 'Cider'} usually has ${usual.lo} to ${usual.hi} g/L.` : ''}`],
     cautions: dose.cautions,
@@ -144,7 +153,7 @@ function Tannin({ batchId, drink, mayLog }: Props) {
   const [rate, setRate] = useState('0.1');
   const gPerL = typedNumber(rate);
   const dose = isNumber(gPerL) && gPerL > 0 && gPerL <= 5 ? tanninDose(gPerL, drink.volume_l) : null;
-  const told: Told | null = dose && { says: `${dose.grams.value} g of tannin powder`, grams: dose.grams.value, substance: 'tannin', name: 'grape tannin', how: dose.grams.how, facts: [], cautions: dose.cautions, none: dose.grams.value > 0 ? null : 'Less than can be weighed.' };
+  const told: Told | null = dose && { says: `${dose.grams.value} g of tannin powder`, grams: dose.grams.value, substance: 'tannin', name: 'grape tannin', ingredient: 'grape-tannin', how: dose.grams.how, facts: [], cautions: dose.cautions, none: dose.grams.value > 0 ? null : 'Less than can be weighed.' };
   return (
     <Dose title="Tannin" batchId={batchId} mayLog={mayLog} told={told} needs="Tell how much, up to 5 g/L.">
       <Field label="Tannin" unit="g/L" inputMode="decimal" autoComplete="off" value={rate} onChange={(event) => setRate(event.target.value)} hint="usual 0.1 to 0.5" />

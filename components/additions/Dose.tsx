@@ -16,6 +16,8 @@ export interface Told {
   grams: number;
   substance: NonNullable<EntryDetail['substance']>;
   name: string;
+  /** Key of the catalogue, by which its nitrogen and sulphite are counted. */
+  ingredient: string | null;
   how: HowAnswer;
   /** What stands beside it, in sentences. */
   facts: readonly string[];
@@ -36,7 +38,7 @@ export function Dose({ title, batchId, mayLog, told, needs, children }: { title:
     setState('sending');
     setFailed(null);
     try {
-      await createEntry(batchId, { kind: 'addition', at: new Date().toISOString(), detail: { substance: dose.substance, name: dose.name, grams: dose.grams }, client_id: clientId });
+      await createEntry(batchId, { kind: 'addition', at: new Date().toISOString(), detail: { substance: dose.substance, name: dose.name, ingredient: dose.ingredient, grams: dose.grams }, client_id: clientId });
       setState({ done: dose.says });
       setClientId(crypto.randomUUID());
     } catch (error) {

@@ -36,7 +36,7 @@ export function IngredientOfOurs({ id, start, onKept }: { id: string | null; sta
     void submit({ sort: 'ingredient', ingredient: ingredientOf(draft) });
   };
   const figure = (field: keyof IngredientDraft & string, label: string, unit: string, path: string, hint?: string) => (
-    <Field label={label} unit={unit} inputMode="text" autoComplete="off" value={String(draft[field])} onChange={set(field)} error={at(path)} hint={hint} />
+    <Field className={field === 'sugar' ? 'col-span-full' : ''} label={label} unit={unit} inputMode="text" autoComplete="off" value={String(draft[field])} onChange={set(field)} error={at(path)} hint={hint} />
   );
   return (
     <form onSubmit={send} noValidate className="flex flex-col gap-4">
@@ -63,7 +63,7 @@ export function IngredientOfOurs({ id, start, onKept }: { id: string | null; sta
         {figure('insoluble', 'Pulp, skins, husks', '%', 'insoluble_share')}
         {figure('days', 'Gives up its sugar over', 'days', 'releases_over_days', 'Empty: at once.')}
         {draft.kind === 'grain' && figure('efficiency', 'The mash wins', '%', 'mash')}
-        {figure('density', 'Weighs, by the jug or spoon', 'g/ml', 'density_g_per_ml', 'Empty: only weighed.')}
+        {figure('density', 'Weighs, by volume', 'g/ml', 'density_g_per_ml', 'Empty: only weighed.')}
         <Field label="One is called" maxLength={30} autoComplete="off" placeholder="jar, piece, tablet" value={draft.pieceName} onChange={set('pieceName')} error={at('each.name')} />
         {figure('pieceGrams', 'One weighs', 'g', 'each.grams', 'Empty: not counted.')}
         {figure('nitrogen', 'Nitrogen for yeast', 'mg/g', 'yan_mg_per_g')}

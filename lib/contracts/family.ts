@@ -29,7 +29,7 @@ export const drinkSchema = z.object({
   /** All that was ever added, with what the must brought, mg/L. */
   total_sulphite_mg_l: rangeSchema,
   sulphite_added: z.boolean(),
-  nitrogen: z.object({ needed_mg_l: z.number().nullable(), given_mg_l: z.number(), given_dap_g: z.number(), given_complex_g: z.number() }),
+  nitrogen: z.object({ needed_mg_l: z.number().nullable(), given_mg_l: z.number(), given_dap_g: z.number(), given_complex_g: z.number(), /** When nutrient went in last. */ last_fed_at: z.string().nullable() }),
   stabilised: z.boolean(),
   diastatic: z.boolean(),
   unfermentable_points: z.number(),

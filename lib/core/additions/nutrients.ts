@@ -12,6 +12,9 @@ export const NO_MORE_AFTER = 0.5;
 /** Above this strength yeast hardly takes up ammonia, % vol: common practice. */
 const DAP_UP_TO_ABV = 9;
 
+/** Nobody is asked to feed again so soon after the last time, whatever the plan says. Our own rule. */
+export const FED_LATELY_MS = 12 * 3_600_000;
+
 export const NUTRIENTS = {
   dap: { name: 'diammonium phosphate (DAP)', mgNPerG: 1000 * DAP_NITROGEN, limitGPerL: DAP_LIMIT_G_PER_L, source: SOURCES.dapOiv },
   complex: { name: 'complex yeast nutrient', mgNPerG: 100, limitGPerL: 0.6, source: practice('complex nutrients hold 80 to 130 mg of nitrogen a gram; the packet wins') },

@@ -1,4 +1,5 @@
 /** Which jobs a batch wants: from the calls, and from how long ago somebody last looked. */
+import type { Feed } from './feed';
 import { CALL_NAMES, type Call, type CallName, type Instant, type Neck, type Stage } from '../types';
 
 const HOUR = 3_600_000;
@@ -13,14 +14,17 @@ const AIRLOCK_EVERY_MS = 14 * DAY;
 /** A job that falls due by the clock is put down this long before. */
 const AHEAD_MS = DAY;
 
-export type WantedKind = 'reading' | 'start' | 'neck' | 'stalled' | 'temperature' | 'sensor' | 'rack' | 'bottle' | 'airlock';
+export type WantedKind = 'reading' | 'start' | 'neck' | 'stalled' | 'temperature' | 'sensor' | 'rack' | 'bottle' | 'airlock' | 'feed';
 
 export interface Wanted {
   kind: WantedKind;
   source: 'call' | 'schedule';
   title: string;
   note: string | null;
-  dueAt: Instant;
+  /** Null: from when it was first wanted. */
+  dueAt: Instant | null;
+  /** Told apart from another of its kind, where one may follow the other without a break. */
+  occasion?: string;
   /** The hour matters. */
   exact: boolean;
 }
@@ -37,6 +41,8 @@ export interface RoundsInput {
   readAt: Instant | null;
   /** Last time somebody saw to the airlock: put it on, or topped it up. */
   airlockAt: Instant | null;
+  /** What is to be fed now. */
+  feed: Feed | null;
   at: Instant;
 }
 
@@ -91,7 +97,11 @@ function airlockDue(input: RoundsInput): Wanted[] {
   return at < dueAt - AHEAD_MS ? [] : [{ kind: 'airlock', source: 'schedule', title: `Look at the water in ${name}’s airlock`, note: null, dueAt, exact: false }];
 }
 
+function fed({ feed, name }: RoundsInput): Wanted[] {
+  return feed ? [{ kind: 'feed', source: 'schedule', title: `Feed ${name}: ${feed.grams} g of ${feed.of}`, note: feed.note, dueAt: null, occasion: String(feed.portion), exact: false }] : [];
+}
+
 /** The jobs that a batch wants at `at`, at most one of a kind. Pure: the same judgement and log always give the same jobs. */
 export function wantedJobs(input: RoundsInput): Wanted[] {
-  return [...fromCalls(input), ...readingDue(input), ...airlockDue(input)];
+  return [...fromCalls(input), ...readingDue(input), ...airlockDue(input), ...fed(input)];
 }

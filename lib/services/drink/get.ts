@@ -5,7 +5,7 @@ import { snakeKeys } from '@/lib/contracts/case';
 import type { DrinkBody } from '@/lib/contracts/family';
 import { loadBatch } from '../batches/load';
 import { iso, isoOrNull } from '../iso';
-import { drinkState, lastMeasured, type DrinkState } from './state';
+import { drinkState, lastFedAt, lastMeasured, type DrinkState } from './state';
 
 const measured = (found: { value: number; at: Date } | null) => found && { value: found.value, at: iso(found.at) };
 
@@ -28,7 +28,7 @@ export function presentDrink(state: DrinkState): DrinkBody {
     free_sulphite_mg_l: measured(lastMeasured(entries, 'free_sulphite_mg_l')),
     total_sulphite_mg_l: makeup.sulphiteMgL,
     sulphite_added: makeup.sulphiteAdded,
-    nitrogen: { needed_mg_l: makeup.nitrogen.neededMgL, given_mg_l: makeup.nitrogen.givenMgL, given_dap_g: makeup.nitrogen.dapG, given_complex_g: makeup.nitrogen.complexG },
+    nitrogen: { needed_mg_l: makeup.nitrogen.neededMgL, given_mg_l: makeup.nitrogen.givenMgL, given_dap_g: makeup.nitrogen.dapG, given_complex_g: makeup.nitrogen.complexG, last_fed_at: isoOrNull(lastFedAt(entries)) },
     stabilised: makeup.stabilised,
     diastatic: makeup.diastatic,
     unfermentable_points: makeup.unfermentable.must + makeup.unfermentable.added,

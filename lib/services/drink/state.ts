@@ -50,8 +50,11 @@ function expectedFinalOf(batch: Batch, effectiveOg: number | null, unfermentable
   return { lo: end(max), value: end((min + max) / 2), hi: end(min) };
 }
 
+/** The last time that nutrient went in. */
+export const lastFedAt = (entries: readonly Entry[]): Date | null => entries.findLast((entry) => detailOf(entry).substance === 'nutrient')?.at ?? null;
+
 /** The last time that something fermentable came in: by the log, by a blend, or before it was split off. */
-function lastFedAt(stories: Stories, batch: Batch, own: Date | null, at: Date): Date | null {
+function lastSugarAt(stories: Stories, batch: Batch, own: Date | null, at: Date): Date | null {
   const inflows = stories.links.filter((link) => link.to === batch.id && link.at <= at);
   const times = inflows.flatMap((link) => {
     if (link.kind !== 'split') return [link.at];
@@ -68,7 +71,7 @@ export async function drinkState(batch: Batch, at: Date, transaction?: Transacti
   const stories = await loadStories(batch, transaction);
   const entries = (stories.of.get(batch.id)?.entries ?? []).filter((entry) => entry.at <= at);
   const told = ledgerOf(batch, entries);
-  const ledger = { ...told, lastAdditionAt: lastFedAt(stories, batch, told.lastAdditionAt, at) };
+  const ledger = { ...told, lastAdditionAt: lastSugarAt(stories, batch, told.lastAdditionAt, at) };
   const makeup = makeupOf(stories, batch.id, at);
   const assessment = (await batchState<AssessmentBody>(batch.id, transaction))?.assessment ?? null;
   const floatAt = assessment?.last_reading_at ? new Date(assessment.last_reading_at) : null;

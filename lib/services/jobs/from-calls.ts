@@ -3,6 +3,7 @@ import { Alert, Job, type Batch, type Entry } from '@/db/models';
 import { wantedJobs, type Wanted } from '@/lib/core/rounds/wanted';
 import type { Assessment, Instant } from '@/lib/core/types';
 import { notifyChange } from '../changes';
+import { feedOf } from './feed';
 import { CALL_OF_KIND } from './take';
 
 /** A call that flickers does not drop its job before it was gone this long, ms. */
@@ -10,7 +11,7 @@ const KEPT_MS = 3 * 3_600_000;
 /** How often it is written down that the reason still stands, ms. */
 const SEEN_EVERY_MS = 30 * 60_000;
 
-const keyOf = (batchId: string, wanted: Pick<Wanted, 'kind' | 'source'>) => `${wanted.source}:${batchId}:${wanted.kind}`;
+const keyOf = (batchId: string, wanted: Pick<Wanted, 'kind' | 'source' | 'occasion'>) => [wanted.source, batchId, wanted.kind, ...(wanted.occasion === undefined ? [] : [wanted.occasion])].join(':');
 
 const lastAt = (dates: readonly (Date | null | undefined)[]): Instant | null => {
   const times = dates.flatMap((date) => (date ? [date.getTime()] : []));
@@ -38,6 +39,7 @@ export async function jobsFromCalls(batch: Batch, assessment: Assessment | null,
           floatAt: assessment.lastReadingAt,
           readAt: lastAt([...entries.filter((entry) => entry.kind === 'reading').map((entry) => entry.at), await ticked('reading')]),
           airlockAt: lastAt([...entries.filter((entry) => entry.neck === 'airlock').map((entry) => entry.at), await ticked('airlock')]),
+          feed: await feedOf(batch, assessment, at, transaction),
           at,
         });
   const now = new Date(at);
@@ -58,7 +60,7 @@ export async function jobsFromCalls(batch: Batch, assessment: Assessment | null,
 async function keep(batch: Batch, wanted: Wanted, rows: readonly Job[], now: Date, transaction: Transaction): Promise<boolean> {
   const dedupeKey = keyOf(batch.id, wanted);
   const row = rows.find((item) => item.dedupeKey === dedupeKey);
-  const facts = { title: wanted.title, note: wanted.note, dueAt: new Date(wanted.dueAt), exact: wanted.exact };
+  const facts = { title: wanted.title, note: wanted.note, dueAt: wanted.dueAt === null ? (row?.dueAt ?? now) : new Date(wanted.dueAt), exact: wanted.exact };
   if (!row) {
     await Job.create({ cellarId: batch.cellarId, batchId: batch.id, kind: wanted.kind, source: wanted.source, dedupeKey, seenAt: now, ...facts }, { transaction });
     return true;

@@ -8,7 +8,7 @@ const AT = Date.UTC(2026, 2, 4, 12);
 const quiet: Call = { verdict: 'no', kind: null, since: null, expectedAt: null, headline: '', reason: '', act: null, changesIt: null, evidence: [] };
 
 const input = (calls: Partial<Record<CallName, Partial<Call>>> = {}, over: Partial<RoundsInput> = {}): RoundsInput => ({
-  name: 'Perry', neck: 'blow_off', stage: 'slowing', pitchedAt: AT - 5 * DAY, floatAt: AT, readAt: null, airlockAt: null, at: AT,
+  name: 'Perry', neck: 'blow_off', stage: 'slowing', pitchedAt: AT - 5 * DAY, floatAt: AT, readAt: null, airlockAt: null, feed: null, at: AT,
   calls: Object.fromEntries(CALL_NAMES.map((name) => [name, { ...quiet, ...calls[name] }])) as Record<CallName, Call>,
   ...over,
 });
