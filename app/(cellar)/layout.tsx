@@ -5,6 +5,8 @@ import { currentSession } from '@/lib/auth/session';
 
 /** Every page of a cellar is for somebody who is signed in. */
 export default async function CellarLayout({ children }: { children: ReactNode }) {
-  if (!(await currentSession())) redirect('/sign-in');
+  const session = await currentSession();
+  if (!session) redirect('/sign-in');
+  if (!session.actor) redirect('/welcome');
   return <CellarShell>{children}</CellarShell>;
 }

@@ -7,6 +7,7 @@ import { useNow } from '@/components/ui/now';
 import { Wordmark } from '@/components/ui/Mark';
 import { DayNightIcon } from '@/components/ui/icons';
 import { chooseTheme, useTheme } from '@/components/ui/theme';
+import { CellarMenu } from './CellarMenu';
 import { isHere, type Place } from './places';
 import { PersonMenu } from './PersonMenu';
 import type { CellarGlance } from './use-glance';
@@ -68,13 +69,17 @@ export function Header({ glance, places }: { glance: CellarGlance; places: reado
         <NavLinks places={places} />
       </div>
       <div className="type-label ml-auto hidden items-center gap-x-7 text-ink2 strip:flex">
-        <span className="hidden wide:inline">{place}</span>
+        <div className={glance.cellars.length > 1 ? '' : 'hidden wide:block'}>
+          <CellarMenu glance={glance} words={place} />
+        </div>
         {heardAt !== null && <span className="hidden wide:inline">sensors heard {clock(heardAt, timeZone)}</span>}
         <DayNight />
         <PersonMenu glance={glance} />
       </div>
       <div className="type-label ml-auto min-w-0 py-1 text-right text-ink2 strip:hidden" style={{ lineHeight: '1rem' }}>
-        <div className="truncate">{cellar && `${cellar}${vessels === null ? '' : `, ${vessels} ${vessels === 1 ? 'vessel' : 'vessels'}`}`}</div>
+        <div className="flex justify-end">
+          <CellarMenu glance={glance} words={cellar && `${cellar}${vessels === null ? '' : `, ${vessels} ${vessels === 1 ? 'vessel' : 'vessels'}`}`} />
+        </div>
         <div>{now !== null && `${dayName(now / 1000, timeZone)}, ${clock(now / 1000, timeZone)}`}</div>
       </div>
     </header>

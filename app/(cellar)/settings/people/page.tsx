@@ -1,8 +1,8 @@
 import type { Metadata } from 'next';
-import { Members } from '@/components/people/Members';
+import { People } from '@/components/people/People';
 
 export const metadata: Metadata = { title: 'People' };
 
-export default function MembersPage() {
-  return <Members />;
+export default function PeoplePage() {
+  return <People />;
 }

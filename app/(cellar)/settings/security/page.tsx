@@ -1,8 +1,8 @@
 import type { Metadata } from 'next';
-import { SignIns } from '@/components/settings/SignIns';
+import { Security } from '@/components/settings/Security';
 
 export const metadata: Metadata = { title: 'Sign-in' };
 
-export default function SignInsPage() {
-  return <SignIns />;
+export default function SecurityPage() {
+  return <Security />;
 }
