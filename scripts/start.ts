@@ -2,7 +2,7 @@ import { randomBytes } from 'node:crypto';
 import { existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { join, resolve } from 'node:path';
 import { Client } from 'pg';
-import { AUTH_SECRET_FILE, DATABASE_URL_FILE, EnvError, parseEnv, type Env } from '@/lib/config/env';
+import { AUTH_SECRET_FILE, DATABASE_URL_FILE, EnvError, FIRST_S3_PORT, parseEnv, STORAGE_URL_FILE, type Env } from '@/lib/config/env';
 import { buildWeb } from './lib/build';
 import { portIsFree, startCluster, type Cluster } from './lib/postgres';
 import { Processes, waitUntil } from './lib/processes';
@@ -57,10 +57,11 @@ function takeDataFolder(folder: string): () => void {
   return () => rmSync(file, { force: true });
 }
 
-async function checkPorts(env: Env, mailbox: boolean): Promise<void> {
+async function checkPorts(env: Env, mailbox: boolean, storage: boolean): Promise<void> {
   const wanted: Array<[string, number]> = [['PORT', env.PORT]];
   if (!env.MQTT_URL) wanted.push(['MQTT_PORT', env.MQTT_PORT]);
   if (mailbox) wanted.push(['MAILBOX_SMTP_PORT', env.MAILBOX_SMTP_PORT], ['MAILBOX_PORT', env.MAILBOX_PORT]);
+  if (storage && env.S3_PORT !== undefined) wanted.push(['S3_PORT', env.S3_PORT]);
   const seen = new Map<number, string>();
   for (const [name, port] of wanted) {
     const twin = seen.get(port);
@@ -75,6 +76,14 @@ function keepAuthSecret(env: Env): string {
   const file = join(env.DATA_DIR, AUTH_SECRET_FILE);
   if (!existsSync(file)) writeFileSync(file, randomBytes(32).toString('base64url'), { mode: 0o600 });
   return readFileSync(file, 'utf8').trim();
+}
+
+/** The local storage's port: the one that was given, else the first free one. */
+async function chooseStoragePort(env: Env): Promise<number> {
+  if (env.S3_PORT !== undefined) return env.S3_PORT;
+  const others = [env.PORT, env.MQTT_PORT, env.MAILBOX_SMTP_PORT, env.MAILBOX_PORT];
+  for (let port = FIRST_S3_PORT; port < FIRST_S3_PORT + 200; port += 1) if (!others.includes(port) && (await portIsFree(port, '127.0.0.1'))) return port;
+  throw new StartError(`No port is free from ${FIRST_S3_PORT} on. Set S3_PORT to a free one.`);
 }
 
 async function createDatabase(adminUrl: string, name: string): Promise<string> {
@@ -104,6 +113,7 @@ async function main(): Promise<void> {
   const env = readEnvironment();
   // Asked before SMTP_URL is filled in for the parts.
   const mailbox = !process.env.SMTP_URL;
+  const storage = !env.S3_ENDPOINT;
   const releaseFolder = takeDataFolder(env.DATA_DIR);
   let cluster: Cluster | null = null;
   let stopping: Promise<void> | undefined;
@@ -124,7 +134,7 @@ async function main(): Promise<void> {
     });
 
   try {
-    await checkPorts(env, mailbox);
+    await checkPorts(env, mailbox, storage);
     const opened = await timed(env.DATABASE_URL ? 'Reaching PostgreSQL' : 'Starting PostgreSQL', () => openDatabase(env));
     cluster = opened.cluster;
     const common = {
@@ -147,6 +157,11 @@ async function main(): Promise<void> {
 
     const tsx = (file: string, ...args: string[]) => ['--import', 'tsx', join(ROOT, file), ...args];
     if (mailbox) processes.start({ name: 'mailbox', args: tsx('scripts/fakes/mailbox.ts') });
+    if (storage) {
+      const port = await chooseStoragePort(env);
+      writeFileSync(join(env.DATA_DIR, STORAGE_URL_FILE), `http://127.0.0.1:${port}`);
+      processes.start({ name: 'storage', args: tsx('scripts/fakes/storage.ts'), env: { S3_PORT: String(port) } });
+    }
     processes.start(env.MQTT_URL ? { name: 'subscriber', args: tsx('broker/subscriber.ts') } : { name: 'broker', args: tsx('broker/server.ts') });
     processes.start({ name: 'worker', args: tsx('broker/worker.ts') });
     processes.start({ name: 'web', args: [join(ROOT, 'node_modules/next/dist/bin/next'), dev ? 'dev' : 'start', '-H', env.HOST, '-p', String(env.PORT)] });

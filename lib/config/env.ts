@@ -33,6 +33,11 @@ const schema = z.object({
   MAILBOX_PORT: port(3001),
   S3_ENDPOINT: url('http', 'https'),
   S3_BUCKET: z.string().min(3).default('fallbright'),
+  /** Of the local stand-in, where S3_ENDPOINT is unset; unset too: the first free one from 3002 on. */
+  S3_PORT: port(3002).unwrap().optional(),
+  AWS_REGION: z.string().min(1).default('us-east-1'),
+  AWS_ACCESS_KEY_ID: z.string().min(1).optional(),
+  AWS_SECRET_ACCESS_KEY: z.string().min(1).optional(),
   /** 1: push services inside this network and over plain http; unset: only outside production. */
   ALLOW_PRIVATE_TARGETS: z.enum(['0', '1'], 'must be 0 or 1').optional(),
   DEMO: z.enum(['0', '1'], 'must be 0 or 1').default('0').transform((value) => value === '1'),
@@ -99,12 +104,21 @@ function fromDataDir(file: string): string | undefined {
 /** Where start keeps what it made: the address of its PostgreSQL and the sign-in secret. */
 export const DATABASE_URL_FILE = 'database.url';
 export const AUTH_SECRET_FILE = 'auth.secret';
+export const STORAGE_URL_FILE = 'storage.url';
+export const FIRST_S3_PORT = 3002;
 
 /** The database's address: DATABASE_URL, else that of the PostgreSQL that start manages. */
 export function databaseUrl(): string {
   const found = env().DATABASE_URL ?? fromDataDir(DATABASE_URL_FILE);
   if (!found) throw new EnvError('The variable DATABASE_URL is not set and no local PostgreSQL was started in DATA_DIR. Set it, or run `bash scripts/start.sh` first.');
   return found;
+}
+
+/** Where photos' files are kept: S3_ENDPOINT, else the local stand-in. */
+export function storageUrl(): string {
+  const { S3_ENDPOINT, S3_PORT } = env();
+  if (S3_ENDPOINT !== undefined) return S3_ENDPOINT;
+  return S3_PORT === undefined ? (fromDataDir(STORAGE_URL_FILE) ?? `http://127.0.0.1:${FIRST_S3_PORT}`) : `http://127.0.0.1:${S3_PORT}`;
 }
 
 /** The secret that signs sessions and links. */

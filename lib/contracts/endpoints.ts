@@ -7,6 +7,7 @@ import { byId, endpoint, type Endpoint } from './endpoint';
 import { endpointsAfter } from './endpoints-after';
 import { endpointsBefore } from './endpoints-before';
 import { endpointsPeople } from './endpoints-people';
+import { endpointsData } from './endpoints-data';
 import { endpointsSensors } from './endpoints-sensors';
 import { endpointsMessages } from './endpoints-messages';
 import { chooseCellar, meSchema, memberList, signInList } from './people';
@@ -54,6 +55,7 @@ export const endpoints = {
   ...endpointsAfter,
   ...endpointsPeople,
   ...endpointsSensors,
+  ...endpointsData,
   ...endpointsMessages,
 
   streamEvents: endpoint({ method: 'GET', path: '/events', summary: 'Server-sent events: `change` says what to ask for again, `beat` that the line is up', access: 'batches.read', response: null, status: 200 }),
