@@ -3,7 +3,7 @@ import { readdirSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { Alert, Batch, Entry, SignIn } from '@/db/models';
-import { endpoints, type EndpointName } from '@/lib/contracts/endpoints';
+import { endpoints, type Endpoint, type EndpointName } from '@/lib/contracts/endpoints';
 import type { Role } from '@/lib/core/roles';
 import type { Call } from '@/lib/core/types';
 import { useDatabase } from '../support/database';
@@ -11,16 +11,17 @@ import { buildBatch, buildCellar, buildEntry, buildMember, buildSensor } from '.
 import { jobRows } from '../support/job-rows';
 import { jobThings } from '../support/job-things';
 import { messageRows, messageThings } from '../support/message-rows';
+import { buildToken, peopleRows, peopleThings } from '../support/people-rows';
 import { EVERYBODY, SHELF_SPAN, watchRows, type RoleRow, type Things } from '../support/role-rows';
 import { call, sessionCookie, startWeb, type Web } from '../support/web';
 
 const ROUTES = join(import.meta.dirname, '../../app/api/v1');
 
 /** A part of the API that brings routes brings its rows: name them here. */
-const TABLE: Partial<Record<EndpointName, RoleRow>> = { ...watchRows, ...jobRows, ...messageRows };
+const TABLE: Partial<Record<EndpointName, RoleRow>> = { ...watchRows, ...jobRows, ...peopleRows, ...messageRows };
 
-/** Tested where they are at home: by a sensor's credential, in the open, by an address that is the key, as a stream. */
-const ELSEWHERE = new Set<string>(['postTelemetry', 'getOpenApi', 'streamEvents', 'readCalendar', 'getShared', 'tasteShared', 'getTakeLink', 'useTakeLink'] satisfies EndpointName[]);
+/** Tested where they are at home: by a sensor's credential, in the open, by an address or a secret that is the key, by a code of an authenticator, as a stream. */
+const ELSEWHERE = new Set<string>(['postTelemetry', 'getOpenApi', 'streamEvents', 'readCalendar', 'getShared', 'tasteShared', 'getTakeLink', 'useTakeLink', 'lookAtInvitation', 'joinByInvitation', 'askForSignInLink', 'askForPassphraseLink', 'resetPassphrase', 'confirmMail', 'confirmSecondFactor', 'endSecondFactor', 'renewRecoveryCodes'] satisfies EndpointName[]);
 
 const EVIDENCE: Call = { verdict: 'yes', kind: 'stuck', since: 0, expectedAt: null, headline: 'Warm it.', reason: 'No fall.', act: null, changesIt: null, evidence: [] };
 
@@ -31,7 +32,7 @@ async function things(cellarId: string, personId: string): Promise<Things> {
   const { sensor } = await buildSensor({ batch });
   const alert = await Alert.create({ cellarId, batchId: batch.id, call: 'stalled', kind: 'stuck', level: 'check', state: 'open', since: new Date(), openedAt: new Date(), evidence: EVIDENCE });
   const signIn = await SignIn.create({ personId, expiresAt: new Date(Date.now() + 3_600_000) });
-  return { batchId: batch.id, entryId: entry.id, sensorId: sensor.identifier, alertId: alert.id, signInId: signIn.id, cellarId, ...(await messageThings({ cellarId, batchId: batch.id, personId, signInId: signIn.id })), ...(await jobThings({ ...other, role: 'brewer' }, personId)) };
+  return { batchId: batch.id, entryId: entry.id, sensorId: sensor.identifier, alertId: alert.id, signInId: signIn.id, cellarId, ...(await peopleThings(cellarId, personId)), ...(await messageThings({ cellarId, batchId: batch.id, personId, signInId: signIn.id })), ...(await jobThings({ ...other, role: 'brewer' }, personId)) };
 }
 
 describe('who may do what', () => {
@@ -96,16 +97,35 @@ describe('who may do what', () => {
     });
   }
 
+  /** One request of a program for each row: with a token of the first role that may, of one that may not, and for another cellar's thing. */
+  for (const [name, row] of Object.entries(TABLE)) {
+    const endpoint: Endpoint = endpoints[name as EndpointName];
+    const bySession = endpoint.access === 'person' || endpoint.by === 'session';
+    it(`${endpoint.method} ${endpoint.path}, with a token: ${bySession ? 'never' : 'as the role of the token'}`, async () => {
+      const ask = (things: Things, token: string) => call(web, endpoint.method, `/api/v1${row.path(things)}`, { body: row.body?.(things), headers: { authorization: `Bearer ${token}`, 'sec-fetch-site': 'none' } });
+      const keeper = await buildMember('keeper');
+      const own = await things(keeper.cellarId, keeper.personId);
+      const tokenAs = async (role: Role) => (await buildToken(keeper.personId, keeper.cellarId, role)).token;
+      const mayNot = EVERYBODY.find((role) => !row.may.includes(role)) as Role | undefined;
+      // The role of the token decides, not the person's own, which is keeper.
+      if (mayNot && !row.byService) expect((await ask(own, await tokenAs(mayNot))).status, mayNot).toBe(403);
+      const token = await tokenAs(row.may[0] as Role);
+      if (row.names && !bySession) expect((await ask(await strangers(), token)).status, 'another cellar’s').toBe(404);
+      const answer = await ask(own, token);
+      expect(answer.status, JSON.stringify(answer.body)).toBe(bySession ? 403 : row.good);
+    });
+  }
+
   it('shows lists of one cellar only', async () => {
     const [mine, theirs] = [await buildMember('keeper'), await buildMember('keeper')];
     await things(mine.cellarId, mine.personId);
     const foreign = await things(theirs.cellarId, theirs.personId);
     const { cookie } = await sessionCookie(mine.personId);
-    for (const path of ['/batches', '/sensors', '/alerts', '/members', `/shelf?${SHELF_SPAN}`, '/musts', '/catalogue', '/jobs', '/lots', '/lots.csv', '/places', '/shares']) {
+    for (const path of ['/batches', '/sensors', '/alerts', '/members', `/shelf?${SHELF_SPAN}`, '/musts', '/catalogue', '/jobs', '/lots', '/lots.csv', '/places', '/shares', '/invitations', '/tokens', '/audit', '/audit.csv', '/audit.json']) {
       const answer = await call(web, 'GET', `/api/v1${path}`, { cookie });
       expect(answer.status).toBe(200);
       const text = JSON.stringify(answer.body);
-      for (const secret of [foreign.batchId, foreign.sensorId, foreign.alertId, theirs.person.email, foreign.mustId, foreign.itemId, foreign.jobId, foreign.lotId, foreign.placeId, foreign.shareId]) expect(text, path).not.toContain(secret);
+      for (const secret of [foreign.batchId, foreign.sensorId, foreign.alertId, theirs.person.email, foreign.mustId, foreign.itemId, foreign.jobId, foreign.lotId, foreign.placeId, foreign.shareId, foreign.invitationId, foreign.tokenId, foreign.memberId]) expect(text, path).not.toContain(secret);
     }
   });
 

@@ -3,7 +3,7 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { freePort } from '@/scripts/lib/postgres';
 import { startProcess, type Running } from './processes';
-import { startWeb, type Web } from './web';
+import { SECRET, startWeb, type Web } from './web';
 
 /** All of Fallbright on free ports, as start runs it, with a database of the caller's. */
 export interface House {
@@ -34,6 +34,7 @@ export async function startHouse(databaseUrl: string): Promise<House> {
     MAILBOX_SMTP_PORT: String(smtpPort),
     MAILBOX_PORT: String(mailboxPort),
     PUBLIC_URL: web.url,
+    AUTH_SECRET: SECRET,
   };
   const running: Array<[string, Running]> = [];
   running.push(['scripts/fakes/mailbox.ts', await startProcess('scripts/fakes/mailbox.ts', variables, 'mailbox ready')]);

@@ -1,6 +1,7 @@
 import type { EndpointName } from '@/lib/contracts/endpoints';
 import type { Role } from '@/lib/core/roles';
 import type { JobThings } from './job-things';
+import type { PeopleThings } from './people-rows';
 
 export type Who = Role | 'nobody';
 export const EVERYBODY: Who[] = ['keeper', 'brewer', 'hand', 'guest'];
@@ -8,7 +9,7 @@ export const NOT_GUESTS: Who[] = ['keeper', 'brewer', 'hand'];
 export const BREWERS: Who[] = ['keeper', 'brewer'];
 
 /** One cellar's things, fresh for each request, so that one request does not decide the next. */
-export interface Things extends JobThings {
+export interface Things extends JobThings, PeopleThings {
   batchId: string;
   entryId: string;
   muteId: string;

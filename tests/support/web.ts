@@ -10,7 +10,8 @@ import { until } from './processes';
 
 const ROOT = resolve(import.meta.dirname, '../..');
 const DIST = '.next';
-const SECRET = process.env.AUTH_SECRET ?? 'a secret that only the tests know, 0123456789';
+/** What signs cookies and links in the tests; every part of a house has to have the same. */
+export const SECRET = process.env.AUTH_SECRET ?? 'a secret that only the tests know, 0123456789';
 const BUILD_PATIENCE_MS = 600_000;
 
 export interface Web {
