@@ -148,7 +148,7 @@ export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rac
       {rack && (
         <>
           {field('sulphite', 'Potassium metabisulphite with it', 'g')}
-          <p className="type-reason text-ink2">The sulphite dose stands under Additions. Keep air out: a full vessel and a hose that reaches the bottom.</p>
+          <p className="type-reason text-ink2">The sulphite dose stands under Additions. Keep air out: a full vessel and a hose that reaches the bottom. Lift a full glass vessel with both hands, one under it, never by its neck; nothing hot into cold glass.</p>
         </>
       )}
       <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={draft.at} onChange={set('at')} error={errors.at} />

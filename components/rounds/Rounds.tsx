@@ -11,6 +11,7 @@ import { useNow } from '@/components/ui/now';
 import { GroupBar, PageHead } from '@/components/ui/Page';
 import { useMe } from '@/lib/client/me';
 import { useJobs } from '@/lib/client/jobs';
+import { AirNote } from './AirNote';
 import { CalendarFeed } from './CalendarFeed';
 import { NewJob } from './NewJob';
 import { RoundRow } from './RoundRow';
@@ -69,6 +70,7 @@ function Walk({ now, timeZone, me, mayDo }: { now: number; timeZone: string; me:
           ]}
         />
       </div>
+      {shown === 'today' && <AirNote />}
       {ticks.failed && <FormError>{ticks.failed}</FormError>}
       {error && !jobs ? (
         <ErrorState title="The rounds did not load" onRetry={retry}>
