@@ -91,7 +91,7 @@ describe('a photo on the log', () => {
   });
 
   it('is taken off by who took it or by a brewer, and hung by a guest on an own tasting note alone', async () => {
-    const { actor, entry, batch } = await scene();
+    const { actor, entry } = await scene();
     const photo = await keepPhoto(actor, { entry: entry.id }, await jpeg(), clock);
     const guest = await buildMember('guest', { cellarId: actor.cellarId });
     const otherHand = await buildMember('hand', { cellarId: actor.cellarId });
