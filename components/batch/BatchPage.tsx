@@ -18,7 +18,7 @@ import { useEntries } from '@/lib/client/entries';
 import { useMe } from '@/lib/client/me';
 import type { BatchBody, EntryBody, SeriesBody } from '@/lib/contracts/batches';
 import { BatchHead, PhoneFacts, PhoneHead } from './BatchHead';
-import { Calls } from './Calls';
+import { Calls, type CallScene } from './Calls';
 import { callRows, type CallRow } from './calls';
 import { Decision, type DoneAct } from './Decision';
 import { EntryForm } from './EntryForm';
@@ -133,6 +133,15 @@ function Loaded({ batch }: { batch: BatchBody }) {
   const first = rows[0] ?? null;
   const known = { pitched: batch.pitched_at !== null, originalGravity: footing ? 1 + footing.effectiveOg / 1000 : batch.original_gravity };
   const close = () => setOpened(null);
+  const scene: CallScene = {
+    batchId: batch.id,
+    now,
+    timeZone,
+    mayTake: may('alerts.acknowledge'),
+    mayOverrule: working && may('entries.alter'),
+    leads: (row) => leadOf(row, batch.id, { bench: may('lots.bottle'), work: working && may('cellarwork.do') }),
+    done: (row) => (working && row.name !== 'rack' && may('entries.create') ? doneAct(row, batch, open, may('entries.alter')) : null),
+  };
   const trouble = [
     { what: 'The readings', error: series.error },
     { what: 'The judgement', error: judgementError },
@@ -158,7 +167,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
         </div>
         <div className="wide:col-start-2 wide:row-span-2 wide:row-start-1 wide:border-l">
           {judged ? (
-            <Calls rows={rows} judgedAt={clock(Date.parse(judged.at) / 1000, timeZone)} mayTake={may('alerts.acknowledge')} />
+            <Calls rows={rows} judgedAt={clock(Date.parse(judged.at) / 1000, timeZone)} pending={judgement?.pending ?? false} scene={scene} />
           ) : (
             <p className="type-body px-(--margin) py-3 text-ink2">Not judged yet. {batch.pitched_at === null ? 'Log the pitch; the calls follow.' : `It is ${STAGE_WORDS.unknown} how it goes until the first readings are in.`}</p>
           )}
@@ -205,6 +214,13 @@ function whenOf(row: CallRow, judged: BatchBody['assessment'], now: number, time
   if (row.state === 'Due') return call.expected_at ? at(call.expected_at) : call.since && `since ${at(call.since)}`;
   if (row.state === 'Leave be') return call.expected_at && `until ${at(call.expected_at)}`;
   return call.since && `since ${at(call.since)}`;
+}
+
+/** Where a call leads to. */
+function leadOf(row: CallRow, batchId: string, may: { bench: boolean; work: boolean }): { href: string; word: string } | null {
+  if (row.name === 'bottle' && may.bench) return { href: `/bench/${batchId}`, word: 'To the bench' };
+  if (row.name === 'rack' && may.work && row.state === 'Ready') return { href: `/batches/${batchId}/work?do=rack`, word: 'Rack it' };
+  return null;
 }
 
 /** The button that logs what the first call asks for. */

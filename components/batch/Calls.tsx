@@ -1,13 +1,14 @@
 'use client';
 
 import { useState } from 'react';
-import { Button } from '@/components/ui/Button';
+import { Button, LinkButton } from '@/components/ui/Button';
 import { OnwardIcon } from '@/components/ui/icons';
 import { Ruler } from '@/components/ui/Ruler';
 import { Sentence } from '@/components/ui/Sentence';
 import { State } from '@/components/ui/StateMark';
 import { acknowledgeAlert } from '@/lib/client/alerts';
 import { isLoud, type CallRow } from './calls';
+import { Overrule, Overruled } from './Overrule';
 
 /** Says that somebody has it; when to look again is asked on the alerts page. */
 export function TakeIt({ alert }: { alert: string }) {
@@ -57,7 +58,48 @@ function Evidence({ row }: { row: CallRow }) {
   );
 }
 
-function LoudCall({ row, mayTake }: { row: CallRow; mayTake: boolean }) {
+/** What can be done about a call from here. */
+export interface CallScene {
+  batchId: string;
+  now: number;
+  timeZone: string;
+  mayTake: boolean;
+  mayOverrule: boolean;
+  /** Where a call leads: the bench, cellar work. */
+  leads: (row: CallRow) => { href: string; word: string } | null;
+  /** What logs that it was done. */
+  done: (row: CallRow) => { word: string; onDone: () => void } | null;
+}
+
+function Acts({ row, scene }: { row: CallRow; scene: CallScene }) {
+  const lead = scene.leads(row);
+  const done = scene.done(row);
+  const mayOverrule = scene.mayOverrule && row.overruled === null && row.word !== 'Not known';
+  if (!row.takenBy && !(row.alert && scene.mayTake) && !lead && !done && !mayOverrule) return null;
+  return (
+    <div className="mt-2 flex flex-wrap items-center justify-end gap-x-3 gap-y-2">
+      {mayOverrule && (
+        <span className="mr-auto max-w-full flex-auto">
+          <Overrule row={row} batchId={scene.batchId} />
+        </span>
+      )}
+      {row.takenBy && <span className="type-label text-ink2">{row.takenBy} has it</span>}
+      {row.alert && scene.mayTake && <TakeIt alert={row.alert} />}
+      {lead && (
+        <LinkButton href={lead.href} size="lane">
+          {lead.word}
+        </LinkButton>
+      )}
+      {done && (
+        <Button size="lane" onClick={done.onDone}>
+          {done.word}
+        </Button>
+      )}
+    </div>
+  );
+}
+
+function LoudCall({ row, scene }: { row: CallRow; scene: CallScene }) {
   const urgent = row.state === 'Stop' || row.state === 'Now' || row.state === 'Check';
   return (
     <section aria-label={`${row.word}: ${row.question}`} className={`border-b px-(--margin) py-3 wide:px-[18px] ${urgent ? 'bg-lit' : ''}`}>
@@ -69,34 +111,31 @@ function LoudCall({ row, mayTake }: { row: CallRow; mayTake: boolean }) {
         <Sentence strong>{row.headline}</Sentence>
       </h3>
       <Evidence row={row} />
-      {(row.takenBy || (row.alert && mayTake)) && (
-        <div className="mt-2 flex items-center justify-end gap-3">
-          {row.takenBy && <span className="type-label text-ink2">{row.takenBy} has it</span>}
-          {row.alert && mayTake && <TakeIt alert={row.alert} />}
-        </div>
-      )}
+      <Acts row={row} scene={scene} />
     </section>
   );
 }
 
 /** A call with nothing to do: one line, its evidence behind it. */
-function QuietCall({ row }: { row: CallRow }) {
+function QuietCall({ row, scene }: { row: CallRow; scene: CallScene }) {
   return (
-    <details className="group border-b">
+    <details className="group border-b" open={row.overruled !== null}>
       <summary className="cursor-pointer list-none px-(--margin) py-2.5 wide:px-[18px] [&::-webkit-details-marker]:hidden">
         <span className="flex items-center justify-between gap-3">
           <State state={row.state} word={row.word} />
           <span className="type-label text-ink2">{row.question}</span>
         </span>
         <span className="mt-0.5 flex items-start justify-between gap-3">
-          <span className="type-verdict text-[0.9375rem]">
+          <span className={`type-verdict text-[0.9375rem] ${row.overruled ? 'text-ink2' : ''}`}>
             <Sentence strong>{row.headline}</Sentence>
           </span>
           <OnwardIcon size={14} className="mt-1 text-ink2 transition-transform group-open:rotate-90" />
         </span>
       </summary>
       <div className="px-(--margin) pb-3 wide:px-[18px]">
+        <Overruled row={row} batchId={scene.batchId} now={scene.now} timeZone={scene.timeZone} mayTakeBack={scene.mayOverrule} />
         <Evidence row={row} />
+        <Acts row={row} scene={scene} />
       </div>
     </details>
   );
@@ -106,17 +145,20 @@ interface CallsProps {
   rows: readonly CallRow[];
   /** `14:31` */
   judgedAt: string;
-  mayTake: boolean;
+  /** Something was logged since; a newer judgement is on its way. */
+  pending: boolean;
+  scene: CallScene;
 }
 
 /** What the program makes of the batch, each with its evidence; what wants a person stands first and open. */
-export function Calls({ rows, judgedAt, mayTake }: CallsProps) {
+export function Calls({ rows, judgedAt, pending, scene }: CallsProps) {
   return (
     <section aria-label="Calls">
       <h2 className="type-label border-b px-(--margin) py-2.5 text-ink2 max-wide:bg-desk wide:px-[18px]">
         Calls, judged <span className="fig">{judgedAt}</span>
+        {pending && ', being judged anew'}
       </h2>
-      {rows.map((row) => (isLoud(row) ? <LoudCall key={row.name} row={row} mayTake={mayTake} /> : <QuietCall key={row.name} row={row} />))}
+      {rows.map((row) => (isLoud(row) ? <LoudCall key={row.name} row={row} scene={scene} /> : <QuietCall key={row.name} row={row} scene={scene} />))}
     </section>
   );
 }

@@ -35,6 +35,7 @@ const DONE_WORDS: Record<EntryKind, string> = {
   top_up: 'Topped up',
   stabilise: 'Stabilised',
   pitch: 'Pitched',
+  overrule: 'Overruled',
 };
 
 /** What is told before it is done, where it could hurt somebody or the batch. */

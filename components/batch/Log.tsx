@@ -2,6 +2,7 @@
 
 import { useState } from 'react';
 import { WaitingRows } from '@/components/offline/WaitingRows';
+import { Photos } from '@/components/photos/Photos';
 import { Button } from '@/components/ui/Button';
 import { FilterTabs } from '@/components/ui/FilterTabs';
 import { Haze } from '@/components/ui/Haze';
@@ -105,6 +106,7 @@ function Row({ row, batchId, now, timeZone, onCorrect }: RowProps) {
             {before ? 'corrected: put it away' : 'corrected'}
           </button>
         )}
+        {entry && <Photos place={{ batch: batchId }} on={{ entry: entry.id }} />}
         {entry && before && <Corrections entry={entry} now={now} timeZone={timeZone} />}
       </div>
       <span className="flex flex-wrap items-center justify-end gap-x-3 justify-self-end max-strip:col-span-2 max-strip:col-start-2 max-strip:row-start-3 max-strip:gap-x-5 strip:col-start-4">

@@ -21,6 +21,8 @@ export interface CallRow {
   alert: string | null;
   /** Who has it. */
   takenBy: string | null;
+  /** What a person holds instead, where they have set it aside. */
+  overruled: BatchBody['overruled'][number] | null;
 }
 
 const QUESTIONS: Record<CallName, string> = {
@@ -80,17 +82,18 @@ function rank(row: CallRow, judged: AssessmentBody): number {
 }
 
 /** All calls of a batch, what wants a person first. */
-export function callRows(batch: Pick<BatchBody, 'neck' | 'alerts' | 'original_gravity'>, judged: AssessmentBody, now: number, timeZone: string): CallRow[] {
+export function callRows(batch: Pick<BatchBody, 'neck' | 'alerts' | 'overruled' | 'original_gravity'>, judged: AssessmentBody, now: number, timeZone: string): CallRow[] {
   const rows = CALL_NAMES.map((name): CallRow => {
     const call = judged.calls[name];
     const alert = batch.alerts.find((item) => item.call === name);
-    const own = stateHere(name, call, batch.neck);
+    const overruled = batch.overruled.find((item) => item.call === name) ?? null;
+    const own = overruled ? 'Leave be' : stateHere(name, call, batch.neck);
     const state: StateWord = alert?.state === 'acknowledged' && own !== 'Stop' && own !== 'Leave be' ? 'In hand' : own;
     const ruler = rulerOf(name, call, batch.original_gravity);
     return {
       name,
       state,
-      word: wordHere(name, call, state),
+      word: overruled ? 'Overruled' : wordHere(name, call, state),
       question: QUESTIONS[name],
       headline: call.headline,
       reason: call.reason,
@@ -98,6 +101,7 @@ export function callRows(batch: Pick<BatchBody, 'neck' | 'alerts' | 'original_gr
       lines: linesOf(call, now, timeZone, ruler),
       alert: alert?.state === 'open' ? alert.id : null,
       takenBy: alert?.taken_by ?? null,
+      overruled,
     };
   });
   return rows.sort((a, b) => rank(a, judged) - rank(b, judged) || ORDER.indexOf(a.name) - ORDER.indexOf(b.name));

@@ -121,6 +121,7 @@ const FIELDS: Record<Exclude<EntryKind, 'reading' | 'addition'>, readonly EntryF
   top_up: ['volume', 'gravity', 'at', 'text'],
   stabilise: ['text', 'at'],
   pitch: ['gravity', 'temperature', 'volume', 'neck', 'at', 'text'],
+  overrule: ['text'],
 };
 
 /** Which fields an entry asks for, in their order. */

@@ -70,6 +70,8 @@ export function entryWords(entry: EntryBody): string {
       return entry.volume_l === null ? 'Blended.' : `Blended, ${litres(entry.volume_l)}.`;
     case 'bottling':
       return entry.volume_l === null ? 'Bottled.' : `Bottled, ${litres(entry.volume_l)}.`;
+    case 'overrule':
+      return entry.detail?.said ? `Overruled: “${entry.detail.said.headline.replace(/\.$/, '')}”.` : 'Overruled a call.';
     case 'observation':
     case 'note':
       return seenWords(entry);

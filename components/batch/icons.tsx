@@ -22,6 +22,8 @@ const DRAWN: Record<LogKind, ReactNode> = {
   blend: <path d="M4.500 2.500V7l5.500 5.500L15.500 7V2.500M10 12.500v5" />,
   // a bottle
   bottling: <path d="M8.200 2h3.600v5c1.800 1 2.700 2.400 2.700 4v7h-9v-7c0-1.600.9-3 2.700-4Z" />,
+  // a line set aside
+  overrule: <path d="M2.500 10h4M13.500 10h4M6.500 15.500l7-11" />,
   // the program's own line
   call: <path d="M1.5 10.500h4l2-6 4 11 2.2-5h4.8" />,
 };
@@ -49,5 +51,6 @@ export const LOG_KIND_WORDS: Record<LogKind, string> = {
   split: 'Split',
   blend: 'Blend',
   bottling: 'Bottling',
+  overrule: 'Overruled',
   call: 'Call',
 };

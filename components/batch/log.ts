@@ -68,7 +68,7 @@ const BY_FILTER: Record<Exclude<LogFilter, 'all'>, readonly LogKind[]> = {
   readings: ['reading', 'pitch'],
   additions: ['addition', 'top_up', 'stabilise', 'rack', 'neck', 'fining', 'split', 'blend', 'bottling'],
   notes: ['note', 'observation'],
-  calls: ['call'],
+  calls: ['call', 'overrule'],
 };
 
 export const filtered = (rows: readonly LogRow[], filter: LogFilter): LogRow[] => rows.filter((row) => filter === 'all' || BY_FILTER[filter].includes(row.kind));

@@ -39,6 +39,7 @@ export function postWords(event: Event): { letters: string; word: string } | nul
     case 'reading':
     case 'observation':
     case 'note':
+    case 'overrule':
       return null;
   }
 }

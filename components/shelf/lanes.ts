@@ -45,11 +45,15 @@ export function alertsOf(lane: LaneBody, listed: readonly AlertBody[] | undefine
 
 const sketch = (call: CallBody) => ({ verdict: call.verdict, kind: call.kind, since: ms(call.since), expectedAt: ms(call.expected_at) });
 
+/** What a person has overruled asks nothing. */
+const QUIET = { verdict: 'no', kind: null, since: null, expectedAt: null } as const;
+
 function attentionOfLane(lane: LaneBody, alerts: readonly LaneAlert[]): Attention {
   const { assessment } = lane;
+  const overruled = new Set(lane.overruled.map((one) => one.call));
   if (!assessment) return { state: lane.state === 'ended' ? 'Done' : 'Leave be', group: 'leave', call: 'started', at: null };
   return attentionOf({
-    calls: Object.fromEntries(CALL_NAMES.map((name) => [name, sketch(assessment.calls[name])])) as Record<CallName, ReturnType<typeof sketch>>,
+    calls: Object.fromEntries(CALL_NAMES.map((name) => [name, overruled.has(name) ? QUIET : sketch(assessment.calls[name])])) as Record<CallName, ReturnType<typeof sketch>>,
     alerts: alerts.map((alert): OpenAlert => ({ call: alert.call, level: alert.level, taken: alert.state === 'acknowledged', since: Date.parse(alert.since) })),
     stage: assessment.stage,
     neck: lane.neck,

@@ -32,6 +32,7 @@ export interface BatchRow {
   assessment: unknown;
   curve: unknown;
   expected: unknown;
+  overruled: Array<{ id: string; call: string; instead: string | null; at: string; by: string | null; reason: string }>;
   alerts: Array<{ id: string; call: string; state: string; openedAt: string; takenBy: string | null }>;
 }
 
@@ -61,7 +62,7 @@ export function findBatches(filter: BatchFilter, transaction?: Transaction): Pro
        b.alcohol_tolerance_abv as "alcoholToleranceAbv", b.temperature_min_c as "temperatureMinC", b.temperature_max_c as "temperatureMaxC",
        b.state, b.ended_at as "endedAt", b.created_at as "createdAt", b.created_at::text as "createdAtText",
        case when mv.id is not null then json_build_object('id', mv.must_id, 'versionId', mv.id, 'name', mv.body->>'name', 'version', mv.version) end as must,
-       s.sensor, st.assessment, ${filter.withCurve ? 'st.curve, st.expected' : 'null as curve, null as expected'}, coalesce(al.alerts, '[]') as alerts
+       s.sensor, st.assessment, ${filter.withCurve ? 'st.curve, st.expected' : 'null as curve, null as expected'}, coalesce(ov.overruled, '[]') as overruled, coalesce(al.alerts, '[]') as alerts
      from batches b
      left join batch_states st on st.batch_id = b.id
      left join must_versions mv on mv.id = b.must_version_id
@@ -76,6 +77,14 @@ export function findBatches(filter: BatchFilter, transaction?: Transaction): Pro
        from alerts x left join people p on p.id = x.acknowledged_by
        where x.batch_id = b.id and x.state <> 'resolved'
      ) al on true
+     left join lateral (
+       select json_agg(json_build_object('id', o.id, 'call', o.call, 'instead', o.instead, 'at', o.at, 'by', p.name, 'reason', o.text)) as overruled
+       from (
+         select distinct on (e.detail->>'call') e.id, e.detail->>'call' as call, e.detail->>'instead' as instead, e.detail->'said' as said, e.at, e.text, e.person_id
+         from entries e where e.batch_id = b.id and e.kind = 'overrule' and e.removed_at is null order by e.detail->>'call', e.at desc
+       ) o left join people p on p.id = o.person_id
+       where o.said->>'verdict' = st.assessment->'calls'->o.call->>'verdict' and o.said->>'kind' is not distinct from st.assessment->'calls'->o.call->>'kind'
+     ) ov on true
      where ${conditions.join(' and ')}
      order by b.created_at desc, b.id desc limit $limit`,
     {

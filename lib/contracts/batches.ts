@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { DRINK_KINDS, NECKS } from '../core/types';
+import { CALL_NAMES, DRINK_KINDS, NECKS, VERDICTS } from '../core/types';
 import { assessmentSchema } from './assessment';
 import { gravity, id, line, temperatureC, text, timestamp } from './common';
 
@@ -96,6 +96,8 @@ export const batchSchema = z.object({
   sensor: z.object({ id: z.string(), name: z.string(), last_heard_at: z.string().nullable() }).nullable(),
   /** The last judgement kept, or null before the first. */
   assessment: assessmentSchema.nullable(),
+  /** Calls that somebody overruled, for as long as the call says what it said then. */
+  overruled: z.array(z.object({ id, call: z.enum(CALL_NAMES), instead: z.enum(['yes', 'no']).nullable(), at: z.string(), by: z.string().nullable(), reason: z.string() })),
   /** Open alerts, worst first. */
   alerts: z.array(z.object({ id, call: z.string(), state: z.string(), opened_at: z.string(), taken_by: z.string().nullable() })),
 });
@@ -110,9 +112,9 @@ export const batchQuery = z.object({
   limit: z.coerce.number().int().min(1).max(200).default(100),
 });
 
-export const ENTRY_KINDS = ['pitch', 'reading', 'observation', 'neck', 'rack', 'addition', 'top_up', 'stabilise', 'note', 'fining', 'split', 'blend', 'bottling'] as const;
+export const ENTRY_KINDS = ['pitch', 'reading', 'observation', 'neck', 'rack', 'addition', 'top_up', 'stabilise', 'note', 'fining', 'split', 'blend', 'bottling', 'overrule'] as const;
 /** Those that somebody logs by themselves; the others come with the work they are part of. */
-export const LOGGED_KINDS = ['pitch', 'reading', 'observation', 'neck', 'rack', 'addition', 'top_up', 'stabilise', 'note'] as const;
+export const LOGGED_KINDS = ['pitch', 'reading', 'observation', 'neck', 'rack', 'addition', 'top_up', 'stabilise', 'note', 'overrule'] as const;
 
 export const CLARITIES = ['cloudy', 'hazy', 'clearing', 'bright'] as const;
 export const FOAMS = ['none', 'ring', 'cover', 'at_neck'] as const;
@@ -127,6 +129,10 @@ export const entryDetail = z.object({
   instrument: z.enum(INSTRUMENTS).nullable().optional(),
   /** What a refractometer showed; the gravity is reckoned from it. */
   brix: measure(0, 60, '°Bx'),
+  /** A call that somebody overrules, what they hold instead, and what it said then. The last is set by the program. */
+  call: z.enum(CALL_NAMES).nullable().optional(),
+  instead: z.enum(['yes', 'no']).nullable().optional(),
+  said: z.object({ verdict: z.enum(VERDICTS), kind: z.string().max(40).nullable(), headline: z.string().max(300) }).nullable().optional(),
   /** Taken for the original gravity that nobody had told. Set by the program. */
   as_original_gravity: z.boolean().nullable().optional(),
   ph: measure(2, 8, ''),
@@ -182,6 +188,8 @@ export function checkEntry(value: EntryFacts, tell: (path: string, message: stri
   if (value.kind === 'reading' && value.gravity === null && typeof value.detail?.brix !== 'number') tell('gravity', 'is needed for a reading');
   if (value.kind === 'neck' && value.neck === null) tell('neck', 'choose what closes the neck now');
   if ((value.kind === 'note' || value.kind === 'observation') && value.text === null && !detail) tell('text', 'write what you saw');
+  if (value.kind === 'overrule' && !value.detail?.call) tell('detail.call', 'say which call');
+  if (value.kind === 'overrule' && value.text === null) tell('text', 'say why');
   if (value.kind === 'addition' && value.sugar_g === null && value.fruit_g === null && value.volume_l === null && value.text === null && !detail) tell('sugar_g', 'say what went in');
 }
 

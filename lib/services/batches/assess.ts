@@ -9,9 +9,11 @@ import { judgementMark } from '@/db/queries/judgement-mark';
 import { systemClock, type Clock } from '@/lib/clock';
 import { presentJudgement, type AssessmentBody, type Drawn } from '@/lib/contracts/assessment';
 import { assess } from '@/lib/core/assess';
+import { heeded } from '@/lib/core/calls/overruled';
 import { CALL_NAMES, type CallName } from '@/lib/core/types';
 import { evaluateAlerts } from '@/lib/services/alerts/evaluate';
 import { notifyChange } from '@/lib/services/changes';
+import { overrulingsOf } from '@/lib/services/entries/overrule';
 import { jobsFromCalls } from '@/lib/services/jobs/from-calls';
 import { setupOf } from './setup';
 
@@ -55,8 +57,10 @@ export function assessBatch(batchId: string, { clock = systemClock, silenceCount
       await jobsFromCalls(batch, null, [], now, transaction);
       return 'ended';
     }
-    await evaluateAlerts({ batch, cellar, assessment: judgement.assessment, context: { neck: batch.neck, events: setup.events, silenceCounts }, at }, transaction);
-    await jobsFromCalls(batch, judgement.assessment, entries, at, transaction);
+    // What a person has overruled alerts nobody and makes no job; the judgement is kept as it is.
+    const acted = heeded(judgement.assessment, overrulingsOf(entries));
+    await evaluateAlerts({ batch, cellar, assessment: acted, context: { neck: batch.neck, events: setup.events, silenceCounts }, at }, transaction);
+    await jobsFromCalls(batch, acted, entries, at, transaction);
     return 'assessed';
   });
 }

@@ -33,6 +33,7 @@ export function presentBatch(row: BatchRow, actor: Actor): BatchBody {
     sensor: row.sensor && { id: row.sensor.id, name: row.sensor.name, last_heard_at: iso(row.sensor.lastHeardAt) },
     // Written by the worker in this form; the response schema checks it again.
     assessment: row.assessment as AssessmentBody | null,
+    overruled: row.overruled.map((one) => ({ ...one, call: one.call as BatchBody['overruled'][number]['call'], instead: one.instead === 'yes' || one.instead === 'no' ? one.instead : null, at: new Date(one.at).toISOString() })),
     alerts: may(actor.role, 'alerts.read')
       ? row.alerts.map((alert) => ({ id: alert.id, call: alert.call, state: alert.state, opened_at: new Date(alert.openedAt).toISOString(), taken_by: alert.takenBy }))
       : [],

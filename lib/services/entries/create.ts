@@ -4,7 +4,7 @@ import { Entry, type Batch } from '@/db/models';
 import { authorize } from '@/lib/auth/authorize';
 import type { Action, Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
-import type { CreateEntry, EntryBody, LOGGED_KINDS } from '@/lib/contracts/batches';
+import type { CreateEntry, EntryBody, EntryDetail, LOGGED_KINDS } from '@/lib/contracts/batches';
 import { correctHydrometer } from '@/lib/core/gravity/hydrometer';
 import { correctBrix, gravityByRefractometer, sgOfBrix } from '@/lib/core/gravity/refractometer';
 import { ConflictError, InvalidError } from '@/lib/errors';
@@ -16,6 +16,7 @@ import { broughtBy } from './brought';
 import { answerJobs } from '../jobs/answer';
 import { applyEntry, takeAsOriginal } from './effects';
 import { namesOf } from './names';
+import { quieten, saidThen } from './overrule';
 import { presentEntry } from './present';
 
 /** Looking and writing down is a hand's work; what changes the drink is the brewer's. */
@@ -29,6 +30,7 @@ const ACTION: Record<(typeof LOGGED_KINDS)[number], Action> = {
   addition: 'entries.alter',
   top_up: 'entries.alter',
   stabilise: 'entries.alter',
+  overrule: 'entries.alter',
 };
 
 /** A clock that is a little ahead is no reason to refuse. */
@@ -62,9 +64,9 @@ async function byRefractometer(batch: Batch, shown: number, sampleC: number | nu
 }
 
 /** What was told in detail, with what the program made of it. */
-function kept({ detail, gravity }: CreateEntry, original: boolean): CreateEntry['detail'] {
-  const { as_original_gravity: _, ...told } = detail ?? {};
-  const made = { ...told, ...(typeof told.brix === 'number' && gravity === null && { instrument: 'refractometer' as const }), ...(original && { as_original_gravity: true }) };
+function kept({ detail, gravity }: CreateEntry, original: boolean, said: NonNullable<EntryDetail['said']> | null): CreateEntry['detail'] {
+  const { as_original_gravity: _, said: _said, ...told } = detail ?? {};
+  const made = { ...told, ...(typeof told.brix === 'number' && gravity === null && { instrument: 'refractometer' as const }), ...(original && { as_original_gravity: true }), ...(said && { said }) };
   return Object.keys(made).length > 0 ? made : detail && null;
 }
 
@@ -88,6 +90,7 @@ export async function createEntry(actor: Actor, batchId: string, input: CreateEn
     async function write(): Promise<Entry> {
       await applyEntry(batch, input, transaction);
       const gravity = await gravityOf(batch, input, transaction);
+      const said = input.kind === 'overrule' && input.detail?.call ? await saidThen(batch, input.detail.call, transaction) : null;
       const original = await takeAsOriginal(batch, { kind: input.kind, at, gravity, detail: input.detail }, transaction);
       const { sugarG, fruitG } = await broughtBy(actor, input, transaction);
       const created = await Entry.create(
@@ -105,7 +108,7 @@ export async function createEntry(actor: Actor, batchId: string, input: CreateEn
           volumeL: input.volume_l,
           sugarG,
           fruitG,
-          detail: kept(input, original),
+          detail: kept(input, original, said),
           personId: actor.personId,
           clientId: input.client_id,
         },
@@ -113,6 +116,7 @@ export async function createEntry(actor: Actor, batchId: string, input: CreateEn
       );
       // The times that the database writes by itself.
       await created.reload({ transaction });
+      if (said && input.detail?.call) await quieten(actor, batch, input.detail.call, input.text, new Date(clock.now()), transaction);
       await answerJobs(actor, batch, created, new Date(clock.now()), transaction);
       await auditBy(actor, 'entry.created', created.id, { batch: batchId, kind: input.kind }, transaction);
       await notifyChange({ cellar: actor.cellarId, kind: 'entry', batch: batchId }, transaction);

@@ -57,7 +57,7 @@ export async function updateEntry(actor: Actor, batchId: string, entryId: string
     const temperature = input.temperature_c !== undefined ? input.temperature_c : entry.temperatureC;
     const calibrated = input.calibrated_at_c !== undefined ? input.calibrated_at_c : entry.calibratedAtC;
     // What the program made of it is not the writer's to change.
-    const detail = input.detail === undefined ? was.detail : withMark(input.detail, was.detail?.as_original_gravity);
+    const detail = input.detail === undefined ? was.detail : withMarks(input.detail, was.detail);
     const remeasured = input.gravity !== undefined || input.temperature_c !== undefined || input.calibrated_at_c !== undefined || input.detail !== undefined;
     entry.set({
       at: input.at === undefined ? entry.at : new Date(input.at),
@@ -89,9 +89,10 @@ export async function updateEntry(actor: Actor, batchId: string, entryId: string
   });
 }
 
-function withMark(detail: Before['detail'], mark: boolean | null | undefined): Before['detail'] {
-  const { as_original_gravity: _, ...told } = detail ?? {};
-  return mark ? { ...told, as_original_gravity: true } : detail && told;
+function withMarks(detail: Before['detail'], was: Before['detail']): Before['detail'] {
+  const { as_original_gravity: _, said: _said, ...told } = detail ?? {};
+  const marks = { ...(was?.as_original_gravity && { as_original_gravity: true }), ...(was?.said && { said: was.said }) };
+  return detail || Object.keys(marks).length > 0 ? { ...told, ...marks } : null;
 }
 
 /** What it says after the correction has to make sense as if it were written anew. */

@@ -49,6 +49,7 @@ export const batch = (over: Partial<BatchBody> = {}): BatchBody => ({
   must: null,
   sensor: { id: 'float-05', name: 'Float 05', last_heard_at: hours(-0.1) },
   assessment: judged(),
+  overruled: [],
   alerts: [],
   ...over,
 });

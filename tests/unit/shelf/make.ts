@@ -43,6 +43,7 @@ export function aLane({ calls = {}, alerts = [], entries = [], ...given }: Given
     ended_at: null,
     created_at: at('2026-10-09T19:00Z'),
     must: null,
+    overruled: [],
     sensor: { id: 'float-05', name: 'Float 05', last_heard_at: at('2026-10-15T14:31Z') },
     assessment: {
       at: at('2026-10-15T14:31Z'),
