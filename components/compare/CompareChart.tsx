@@ -105,7 +105,7 @@ export function CompareChart({ curves, measure }: { curves: readonly Curve[]; me
             ))}
             {wide && (
               <>
-                <path d={`M${x(curve.points.at(-1)!.day) + 3} ${y(curve.points.at(-1)!.value)}L${right + 8} ${names.get(curve.id)}`} stroke="var(--ink3)" fill="none" />
+                <path d={`M${x(curve.points.at(-1)!.day) + 3} ${y(curve.points.at(-1)!.value)}L${right + 8} ${names.get(curve.id)}`} stroke="var(--rule2)" fill="none" />
                 <text x={right + 12} y={(names.get(curve.id) ?? 0) + 4} fontSize="12" fontWeight="600" fill="var(--ink)">
                   {curve.name.length > 22 ? `${curve.name.slice(0, 21)}…` : curve.name}
                 </text>

@@ -120,7 +120,7 @@ function Table({ curves, measure }: { curves: readonly Curve[]; measure: Measure
   return (
     <details className="border-t px-(--margin) py-2">
       <summary className="type-label flex min-h-11 cursor-pointer items-center text-ink2 strip:min-h-8">The same numbers as a table</summary>
-      <div className="overflow-x-auto" tabIndex={0} role="group" aria-label="The curves as a table">
+      <div className="relative overflow-x-auto" tabIndex={0} role="group" aria-label="The curves as a table">
         <table className="type-label border-collapse">
           <thead>
             <tr className="border-b text-left">

@@ -15,14 +15,14 @@ export function Results({ items }: { items: readonly Compared[] }) {
     { name: 'original gravity', says: ({ batch }) => batch.original_gravity?.toFixed(3) ?? 'not told' },
     { name: 'gravity', says: ({ result }) => result.gravity?.toFixed(3) ?? 'not read' },
     { name: 'attenuation', says: ({ result }) => (result.attenuation_percent === null ? 'not known' : `${result.attenuation_percent.toFixed(0)} %`) },
-    { name: 'from pitch to the end', says: ({ result }) => (result.hours_to_terminal === null ? 'not yet' : days(result.hours_to_terminal)) },
+    { name: 'from pitch to the end', says: ({ batch, result }) => (result.hours_to_terminal === null ? (batch.state === 'ended' ? 'not known' : 'not yet') : days(result.hours_to_terminal)) },
     { name: 'lots', says: ({ result }) => String(result.lots) },
     { name: 'tasted', says: ({ result }) => (result.score === null ? 'by nobody' : `${result.score.toFixed(1)} of 10`) },
   ];
   return (
     <section aria-label="Results">
       <GroupBar word="Results" />
-      <div className="overflow-x-auto" tabIndex={0} role="group" aria-label="Results side by side">
+      <div className="relative overflow-x-auto" tabIndex={0} role="group" aria-label="Results side by side">
         <table className="w-full border-collapse">
           <thead>
             <tr className="border-b text-left align-bottom">

@@ -50,9 +50,22 @@ export function valueAt(points: readonly Point[], day: number): number | null {
   return left.value + share * (right.value - left.value);
 }
 
-/** A batch as a curve; where no sensor was in it, the readings by hand are joined. */
+/** Each value as the median of itself and its neighbours, so that a float that was knocked draws no spike. */
+const CALM_EACH_SIDE = 4;
+function calmed(points: readonly Point[]): Point[] {
+  return points.map((point, index) => {
+    const around = points.slice(Math.max(0, index - CALM_EACH_SIDE), index + CALM_EACH_SIDE + 1).map((item) => item.value).toSorted((a, b) => a - b);
+    return { day: point.day, value: around[Math.floor(around.length / 2)]! };
+  });
+}
+
+/** A batch as a curve: as judged, else as measured; where no sensor was in it, the readings by hand are joined. */
 export function curveOf(item: Compared, measure: Measure, colour: string): Curve {
   const value = valueOf(item, measure);
+  const judged = measure === 'temperature' ? [] : item.curve.flatMap(({ hour, gravity }): Point[] => {
+    const found = value(gravity, null);
+    return hour < 0 || found === null ? [] : [{ day: hour / HOURS, value: found }];
+  });
   const sensed = item.hours.flatMap((hour, index): Point[] => {
     const found = value(item.gravity[index] ?? null, item.temperature[index] ?? null);
     return hour < 0 || found === null ? [] : [{ day: hour / HOURS, value: found }];
@@ -63,7 +76,7 @@ export function curveOf(item: Compared, measure: Measure, colour: string): Curve
   });
   const start = value(item.batch.original_gravity, null);
   const byHand = [...(start === null || measure === 'temperature' ? [] : [{ day: 0, value: start }]), ...rings].toSorted((a, b) => a.day - b.day);
-  const points = sensed.length > 1 ? sensed : byHand;
+  const points = judged.length > 1 ? judged : sensed.length > 2 * CALM_EACH_SIDE ? calmed(sensed) : sensed.length > 1 ? sensed : byHand;
   const posts = item.posts.flatMap(({ hour, kind }) => {
     const letter = LETTERS[kind];
     const found = valueAt(points, hour / HOURS);

@@ -50,7 +50,7 @@ export async function keepAssessment(row: { cellarId: string; batchId: string; a
 export async function batchesToJudge(before: Date): Promise<string[]> {
   const rows = await database().query<{ id: string }>(
     `select b.id from batches b left join batch_states s on s.batch_id = b.id
-     where b.state = 'working' and (s.assessed_at is null or s.assessed_at < $before)
+     where s.assessed_at is null or (b.state = 'working' and s.assessed_at < $before)
      order by s.assessed_at nulls first, b.id`,
     { bind: { before }, type: QueryTypes.SELECT },
   );

@@ -22,6 +22,8 @@ export const compareSchema = z.object({
       hours: z.array(z.number()),
       gravity: z.array(z.number().nullable()),
       temperature: z.array(z.number().nullable()),
+      /** As judged, up to the last judgement; empty before the first. */
+      curve: z.array(z.object({ hour: z.number(), gravity: z.number() })),
       by_hand: z.array(z.object({ hour: z.number(), gravity: z.number() })),
       posts: z.array(z.object({ hour: z.number(), kind: z.enum(ENTRY_KINDS) })),
       result: z.object({ gravity: z.number().nullable(), abv_percent: z.number().nullable(), /** Of the strength. */ how: howSchema.nullable(), attenuation_percent: z.number().nullable(), hours_to_terminal: z.number().nullable(), score: z.number().nullable(), lots: z.number().int() }),

@@ -1,4 +1,5 @@
 import { Entry } from '@/db/models';
+import { keptCurve } from '@/db/queries/batch-states';
 import { findBatches } from '@/db/queries/batches';
 import { findLots } from '@/db/queries/lots';
 import { authorize } from '@/lib/auth/authorize';
@@ -42,13 +43,19 @@ async function one(actor: Actor, id: string, points: number): Promise<CompareBod
   const scores = lots.flatMap((lot) => lot.tastings.flatMap((tasting) => (tasting.score === null ? [] : [tasting.score])));
   const og = state.ledger.effectiveOg;
   // Written by the worker in this form.
-  const terminalAt = (row.assessment as AssessmentBody | null)?.terminal_at?.value;
+  const assessment = row.assessment as AssessmentBody | null;
+  // Before it stands still its end is a forecast, and not a result.
+  const terminalAt = assessment?.stage === 'terminal' ? assessment.terminal_at?.value : undefined;
+  // What has not happened is not laid beside what has.
+  const until = (batch.endedAt?.getTime() ?? Date.now()) / 1000;
+  const curve = (await keptCurve(id)).map((point) => ({ at: Date.parse(point.at) / 1000, gravity: point.gravity })).filter((point) => point.at <= until);
   return {
     batch: presentBatch(row, actor),
     zero_at: zero === null ? null : iso(zero * 1000),
     hours: zero === null ? [] : series.at.map((at) => hoursFrom(zero, at)),
     gravity: zero === null ? [] : series.gravity,
     temperature: zero === null ? [] : series.temperature,
+    curve: zero === null ? [] : curve.map((point) => ({ hour: hoursFrom(zero, point.at), gravity: point.gravity })),
     by_hand: zero === null ? [] : entries.flatMap((entry) => (entry.kind === 'reading' && entry.gravity !== null ? [{ hour: hoursFrom(zero, entry.at.getTime() / 1000), gravity: entry.gravity }] : [])),
     posts: zero === null ? [] : entries.flatMap((entry) => {
       const kind = kindOf(entry.kind);

@@ -8,6 +8,7 @@ function compared(over: Partial<Compared> = {}): Compared {
     hours: [0, 24, 48],
     gravity: [1.05, 1.03, 1.01],
     temperature: [18, null, 20],
+    curve: [],
     by_hand: [{ hour: 36, gravity: 1.021 }],
     posts: [{ hour: 36, kind: 'rack' }, { hour: 900, kind: 'addition' }],
     result: { gravity: 1.01, abv_percent: 5.3, how: null, attenuation_percent: 80, hours_to_terminal: null, score: null, lots: 0 },
@@ -20,6 +21,17 @@ describe('a curve of the comparison', () => {
     expect(curveOf(compared(), 'gravity', '#000').points).toEqual([{ day: 0, value: 1.05 }, { day: 1, value: 1.03 }, { day: 2, value: 1.01 }]);
     const share = curveOf(compared(), 'share', '#000').points.map((point) => Math.round(point.value));
     expect(share).toEqual([0, 40, 80]);
+  });
+
+  it('is drawn as it was judged, where it was', () => {
+    expect(curveOf(compared({ curve: [{ hour: 0, gravity: 1.051 }, { hour: 48, gravity: 1.011 }] }), 'gravity', '#000').points).toEqual([{ day: 0, value: 1.051 }, { day: 2, value: 1.011 }]);
+  });
+
+  it('draws no spike for a knock', () => {
+    const hours = Array.from({ length: 30 }, (_, index) => index);
+    const curve = curveOf(compared({ hours, gravity: hours.map((hour) => (hour === 12 ? 1.09 : 1.05 - hour / 1000)), temperature: hours.map(() => 18) }), 'gravity', '#000');
+    expect(Math.max(...curve.points.map((point) => point.value))).toBeLessThanOrEqual(1.05);
+    expect(curve.points[20]!.value).toBeCloseTo(1.03, 9);
   });
 
   it('joins the readings by hand where no sensor was in it', () => {
