@@ -7,6 +7,7 @@ import { BottleDrawing } from '@/components/bench/BottleDrawing';
 import { sizeWords } from '@/components/bench/words';
 import { drinkHex } from '@/components/charts/palette';
 import { Shares } from '@/components/share/Shares';
+import { Photos } from '@/components/photos/Photos';
 import { Tastings } from '@/components/tasting/Tastings';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Facts, type Fact } from '@/components/ui/Facts';
@@ -71,6 +72,9 @@ export function LotPage({ id }: { id: string }) {
       )}
       <Facts facts={factsOf(lot, day)} columns="grid-cols-2 strip:grid-cols-4 wide:grid-cols-8" />
       {lot.note && <p className="type-body border-b px-(--margin) py-2 break-words">{lot.note}</p>}
+      <div className="border-b px-(--margin) py-2">
+        <Photos place={{ lot: lot.id }} on={{ lot: lot.id }} />
+      </div>
       <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px]">
         <div className="min-w-0">
           <Bottles lot={lot} />

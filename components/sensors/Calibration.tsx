@@ -15,7 +15,7 @@ import { CalibrationChart } from './CalibrationChart';
 import { CalibrationPoints, type ChosenPoint } from './CalibrationPoints';
 import { Candidates } from './Candidates';
 import { KeepFit } from './KeepFit';
-import { OffsetPanel } from './OffsetPanel';
+import { OwnOffset, Suggested } from './OffsetPanel';
 import { PointForm } from './PointForm';
 import { useWork } from './use-work';
 import { Versions } from './Versions';
@@ -113,12 +113,13 @@ export function Calibration({ sensor, mayChange, now, timeZone }: { sensor: Sens
   return (
     <section aria-label="Calibration">
       <GroupBar word="Calibration" note={[inForce ?? 'none in force', ...(calibration.turning ? ['readings are being turned'] : []), ...(calibration.waiting > 0 ? [`${calibration.waiting} readings wait`] : [])].join(' · ')} />
-      <OffsetPanel sensor={sensor.id} calibration={calibration} mayChange={mayChange} timeZone={timeZone} now={now} />
+      {calibration.suggestion && <Suggested sensor={sensor.id} suggestion={calibration.suggestion} mayChange={mayChange} timeZone={timeZone} />}
       {leans ? (
         <Bench sensor={sensor} calibration={calibration} mayChange={mayChange} timeZone={timeZone} now={now} />
       ) : (
         <p className="type-body border-b px-(--margin) py-3 text-ink2">It sends gravity itself, so no curve is needed. Should it send its inclination, the bench for a curve stands here.</p>
       )}
+      {mayChange && <OwnOffset sensor={sensor.id} timeZone={timeZone} now={now} />}
       <Versions sensor={sensor.id} versions={calibration.versions} mayChange={mayChange} timeZone={timeZone} />
     </section>
   );

@@ -4,7 +4,7 @@ import { useId, useRef } from 'react';
 import { useWidth } from '@/components/ui/width';
 import { feltAt } from '@/lib/core/calibration/apply';
 import type { CalibrationFit, CalibrationPoint } from '@/lib/core/calibration/calibrate';
-import { curvePaths, pictureWords, placed, scaleOf } from './calibration-picture';
+import { curvePaths, degreesScale, pictureWords, placed, scaleOf } from './calibration-picture';
 import { signedPoints } from './words';
 
 const LEFT = 62;
@@ -23,7 +23,7 @@ export function CalibrationChart({ points, fit, correctsTemperature }: { points:
   const width = Math.max(288, useWidth(frame, 720));
   const haze = `haze-${useId().replace(/\W/g, '')}`;
   const known = (point: CalibrationPoint) => (correctsTemperature ? feltAt(point.gravity, point.temperature) : point.gravity);
-  const xs = scaleOf([0, ...points.map((point) => point.inclination), ...(fit?.curve.map((at) => at.inclination) ?? [])], width > 560 ? 9 : 5);
+  const xs = degreesScale([...points.map((point) => point.inclination), ...(fit?.curve.map((at) => at.inclination) ?? [])], width > 560 ? 9 : 5);
   const ys = scaleOf([...points.map(known), ...(fit?.curve.map((at) => at.felt) ?? [])], 6);
   const x = placed(xs, LEFT, width - RIGHT);
   const y = placed(ys, HEIGHT - 4, 22);

@@ -28,11 +28,13 @@ interface KeepProps {
 const NAMES: Record<Degree, string> = { 1: 'Straight', 2: 'Bent', 3: 'Bent twice' };
 
 /** How the curve is drawn, and from when on readings stand by it. */
-export function KeepFit({ sensor, points, outcome, degree, onDegree, corrects, onCorrects, timeZone, now }: KeepProps) {
+export function KeepFit({ sensor, points, outcome, degree, onDegree, corrects, onCorrects, calibration, timeZone, now }: KeepProps) {
   const [from, setFrom] = useState<string | null>(null);
   const [kept, setKept] = useState<number | null>(null);
   const { busy, failed, fields, run, setFields } = useWork('The calibration was not kept. Try again.');
-  const shown = from ?? (now > 0 ? toLocalInput(now * 1000, timeZone) : '');
+  // What waits is what most people want turned.
+  const usual = calibration.waiting_since ? Math.floor(Date.parse(calibration.waiting_since) / 60_000) * 60_000 : now * 1000;
+  const shown = from ?? (now > 0 ? toLocalInput(usual, timeZone) : '');
 
   async function keep() {
     const appliesFrom = fromLocalInput(shown, timeZone);

@@ -16,7 +16,7 @@ import { signedPoints } from './words';
 const pointsWords = (gravity: number) => `${(Math.abs(gravity) * 1000).toFixed(1).replace(/\.0$/, '')} points`;
 
 /** What the readings by hand say of it; it changes nothing until a person agrees. */
-function Suggested({ sensor, suggestion, mayChange, timeZone }: { sensor: string; suggestion: NonNullable<CalibrationBody['suggestion']>; mayChange: boolean; timeZone: string }) {
+export function Suggested({ sensor, suggestion, mayChange, timeZone }: { sensor: string; suggestion: NonNullable<CalibrationBody['suggestion']>; mayChange: boolean; timeZone: string }) {
   const { busy, failed, run } = useWork('The offset was not kept. Try again.');
   const since = dayName(Date.parse(suggestion.since) / 1000, timeZone);
   const { pairs } = suggestion;
@@ -40,7 +40,7 @@ function Suggested({ sensor, suggestion, mayChange, timeZone }: { sensor: string
 }
 
 /** An offset by one's own judgement. */
-function OwnOffset({ sensor, timeZone, now }: { sensor: string; timeZone: string; now: number }) {
+export function OwnOffset({ sensor, timeZone, now }: { sensor: string; timeZone: string; now: number }) {
   const [points, setPoints] = useState('');
   const [from, setFrom] = useState<string | null>(null);
   const { busy, failed, fields, run, setFields } = useWork('The offset was not kept. Try again.');
@@ -68,14 +68,5 @@ function OwnOffset({ sensor, timeZone, now }: { sensor: string; timeZone: string
         </div>
       </div>
     </details>
-  );
-}
-
-export function OffsetPanel({ sensor, calibration, mayChange, timeZone, now }: { sensor: string; calibration: CalibrationBody; mayChange: boolean; timeZone: string; now: number }) {
-  return (
-    <>
-      {calibration.suggestion && <Suggested sensor={sensor} suggestion={calibration.suggestion} mayChange={mayChange} timeZone={timeZone} />}
-      {mayChange && <OwnOffset sensor={sensor} timeZone={timeZone} now={now} />}
-    </>
   );
 }

@@ -29,6 +29,12 @@ export function scaleOf(values: readonly number[], wanted: number): Scale {
   return { from, to, ticks: Array.from({ length: count + 1 }, (_, index) => Number((from + index * step).toFixed(6))) };
 }
 
+/** Of inclinations: nothing leans less than 0° or more than 90°. */
+export function degreesScale(values: readonly number[], wanted: number): Scale {
+  const { from, to, ticks } = scaleOf([0, ...values], wanted);
+  return { from: Math.max(0, from), to: Math.min(90, to), ticks: ticks.filter((tick) => tick >= 0 && tick <= 90) };
+}
+
 export const placed = (scale: Scale, start: number, end: number) => (value: number) => start + ((value - scale.from) / (scale.to - scale.from)) * (end - start);
 
 /** The curve and its band as SVG paths. */

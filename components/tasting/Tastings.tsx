@@ -3,6 +3,7 @@
 import { useState } from 'react';
 import { Sheet } from '@/components/batch/Sheet';
 import { dayWords } from '@/components/book/words';
+import { Photos } from '@/components/photos/Photos';
 import { Button } from '@/components/ui/Button';
 import { Haze } from '@/components/ui/Haze';
 import { GroupBar } from '@/components/ui/Page';
@@ -71,6 +72,7 @@ export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; ti
                 </p>
                 {tasting.words && <p className="type-body break-words">{tasting.words}</p>}
                 {tasting.next_time && <p className="type-reason break-words text-ink2">Next time: {tasting.next_time}</p>}
+                <Photos place={{ lot: lotId }} on={{ tasting: tasting.id }} own={tasting.mine} />
               </li>
             ))}
           </ul>

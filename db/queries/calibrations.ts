@@ -28,10 +28,18 @@ export function pairCandidates(sensorId: number, entryId: string | null = null, 
   );
 }
 
+export interface CalibrationState {
+  waiting: number;
+  waitingSince: Date | null;
+  turning: boolean;
+  last: { at: string; inclination: number; temperature: number | null } | null;
+}
+
 /** Readings that wait for a calibration, whether any are being turned, and the last inclination. */
-export async function calibrationState(sensorId: number): Promise<{ waiting: number; turning: boolean; last: { at: string; inclination: number; temperature: number | null } | null }> {
-  const [row] = await database().query<{ waiting: number; turning: boolean; last: { at: string; inclination: number; temperature: number | null } | null }>(
+export async function calibrationState(sensorId: number): Promise<CalibrationState> {
+  const [row] = await database().query<CalibrationState>(
     `select (select count(*)::int from (select 1 from readings where sensor_id = $sensorId and gravity is null and inclination is not null and calibration_id is null limit 100000) w) as waiting,
+       (select measured_at from readings where sensor_id = $sensorId and gravity is null and inclination is not null and calibration_id is null order by measured_at limit 1) as "waitingSince",
        exists (select 1 from recalculations r where r.sensor_id = $sensorId and r.done_at is null and r.asked_at > now() - interval '20 seconds') as turning,
        (select json_build_object('at', measured_at, 'inclination', inclination, 'temperature', temperature) from readings where sensor_id = $sensorId and inclination is not null order by measured_at desc limit 1) as last`,
     { bind: { sensorId }, type: QueryTypes.SELECT },

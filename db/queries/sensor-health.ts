@@ -7,7 +7,7 @@ export interface HealthRow {
   cell: { at: number; volts: number }[] | null;
   signal: number | null;
   weakest: number | null;
-  /** Arrival less measuring, s, at its smallest of the latest readings: the clocks' difference with the shortest way on top. */
+  /** Arrival less measuring, s, at its smallest of the latest readings: the clocks' difference with the shortest way on top. Null where too few messages came: a backlog says nothing of it. */
   delayS: number | null;
   timed: boolean;
   waiting: number;
@@ -25,7 +25,7 @@ export async function sensorHealth(sensorId: number, at: number): Promise<Health
           from readings where sensor_id = $sensorId and measured_at > to_timestamp($at::float8 / 1000) - interval '30 days' and battery is not null group by 1) x) as cell,
        (select percentile_cont(0.5) within group (order by signal) from day where signal is not null) as signal,
        (select min(signal) from day) as weakest,
-       (select extract(epoch from min(received_at - measured_at))::float8 from latest) as "delayS",
+       (select case when count(distinct received_at) >= 5 then extract(epoch from min(received_at - measured_at))::float8 end from latest) as "delayS",
        (select coalesce(bool_or(received_at <> measured_at), false) from latest) as timed,
        (select count(*)::int from (select 1 from readings where sensor_id = $sensorId and gravity is null and inclination is not null and calibration_id is null limit 100000) w) as waiting`,
     { bind: { sensorId, at }, type: QueryTypes.SELECT },

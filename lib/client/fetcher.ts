@@ -63,6 +63,9 @@ export const getFresh = <T>(path: string): Promise<T> => request<T>(path, { meth
 export const sendJson = <T>(method: 'POST' | 'PATCH' | 'DELETE', path: string, body?: unknown, signal?: AbortSignal): Promise<T> =>
   request<T>(path, { method, ...(signal && { signal }), ...(body === undefined ? {} : { headers: { 'content-type': 'application/json' }, body: JSON.stringify(body) }) });
 
+/** Sends a file as it is. */
+export const sendFile = <T>(path: string, file: Blob): Promise<T> => request<T>(path, { method: 'POST', headers: { 'content-type': file.type || 'application/octet-stream' }, body: file });
+
 /** `path?a=1&b=2`, leaving out what is null or undefined; the same values always give the same string, so it serves as a cache key. */
 export function withQuery(path: string, query: Record<string, string | number | null | undefined>): string {
   const given = Object.entries(query).filter((pair): pair is [string, string | number] => pair[1] !== null && pair[1] !== undefined);

@@ -58,6 +58,7 @@ export const calibrationSchema = z.object({
   versions: z.array(calibrationVersionSchema),
   /** Readings that wait for a calibration. */
   waiting: z.number().int(),
+  waiting_since: z.string().nullable(),
   /** Readings are being turned right now. */
   turning: z.boolean(),
   suggestion: z.object({ offset: z.number(), since: z.string(), spread: z.number(), pairs: z.array(z.object({ at: z.string(), hand: z.number(), float: z.number() })) }).nullable(),

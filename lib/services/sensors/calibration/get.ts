@@ -7,7 +7,7 @@ import type { Actor } from '@/lib/auth/policies';
 import type { CalibrationBody } from '@/lib/contracts/calibration';
 import { suggestOffset } from '@/lib/core/calibration/offset';
 import { namesOf } from '../../entries/names';
-import { iso } from '../../iso';
+import { iso, isoOrNull } from '../../iso';
 import { loadSensor } from '../place';
 import { presentPoint, presentVersion } from './present';
 
@@ -29,13 +29,14 @@ export async function getCalibration(actor: Actor, identifier: string): Promise<
   const points = await CalibrationPointRow.findAll({ where: { sensorId: sensor.id, removedAt: { [Op.is]: null } }, order: [['inclination', 'ASC'], ['at', 'ASC']] });
   const versions = await CalibrationRow.findAll({ where: { sensorId: sensor.id }, order: [['version', 'DESC']] });
   const names = await namesOf([...points, ...versions].map((row) => row.createdBy));
-  const { waiting, turning, last } = await calibrationState(sensor.id);
+  const { waiting, waitingSince, turning, last } = await calibrationState(sensor.id);
   const candidates = await pairCandidates(sensor.id);
   return {
     points: points.map((row) => presentPoint(row, names)),
     candidates: candidates.map((row) => ({ entry_id: row.entryId, at: iso(row.at), batch: row.batch, gravity: row.gravity, inclination: row.inclination, temperature: row.temperature })),
     versions: versions.map((row) => presentVersion(row, names)),
     waiting,
+    waiting_since: isoOrNull(waitingSince),
     turning,
     suggestion: sensor.kind === 'float' ? await suggestionFor(sensor) : null,
     last: last && { at: iso(last.at), inclination: last.inclination, temperature: last.temperature },
