@@ -39,9 +39,9 @@ export function AlertsPage() {
   const [failed, setFailed] = useState<string | null>(null);
   const mayRead = may('alerts.read');
 
-  const open = useAlerts({ state: 'open', limit: 100 });
-  const acknowledged = useAlerts({ state: 'acknowledged', limit: 100 });
-  const resolved = useAlerts({ state: 'resolved', limit: tab === 'resolved' ? Math.max(STEP, cleared) : cleared });
+  const open = useAlerts(mayRead ? { state: 'open', limit: 100 } : null);
+  const acknowledged = useAlerts(mayRead ? { state: 'acknowledged', limit: 100 } : null);
+  const resolved = useAlerts(mayRead ? { state: 'resolved', limit: tab === 'resolved' ? Math.max(STEP, cleared) : cleared } : null);
   const error = open.error ?? acknowledged.error ?? resolved.error;
 
   if (me && !mayRead) {

@@ -7,8 +7,7 @@ import { Field, Select } from '@/components/ui/Field';
 import { DRINK_COLOURS, VESSEL_KINDS } from '@/lib/contracts/batches';
 import { DRINK_KINDS, NECKS } from '@/lib/core/types';
 import { withKind, type BatchDraft, type BatchErrors } from './batch-form';
-import { typedNumber } from './figures';
-import { headspaceNote } from './kinds';
+import { roomNote, type RoomPromise } from './room';
 import { KIND_WORDS, NECK_WORDS } from './words';
 
 interface BatchFieldsProps {
@@ -19,6 +18,8 @@ interface BatchFieldsProps {
   latest: string;
   /** The usual figures follow the kind while a batch is being started; afterwards they are the batch's own. */
   fresh: boolean;
+  /** What its must sheet says of the vessel it proposes. */
+  promise?: RoomPromise | undefined;
   /** More fields beside the yeast's: the sensor. */
   children?: ReactNode;
 }
@@ -55,11 +56,11 @@ function Colours({ value, onChoose }: { value: string; onChoose: (colour: string
 }
 
 /** The fields that starting a batch and changing its set-up share. */
-export function BatchFields({ draft, errors, onChange, latest, fresh, children }: BatchFieldsProps) {
+export function BatchFields({ draft, errors, onChange, latest, fresh, promise, children }: BatchFieldsProps) {
   const set = (field: keyof BatchDraft) => (event: { target: { value: string } }) => onChange({ ...draft, [field]: event.target.value });
   const text = (field: keyof BatchDraft) => ({ value: draft[field], onChange: set(field), error: errors[field], autoComplete: 'off' });
   const figure = (field: keyof BatchDraft) => ({ ...text(field), inputMode: 'decimal' as const });
-  const room = headspaceNote(draft.kind, typedNumber(draft.volume), typedNumber(draft.vessel), draft.neck);
+  const room = roomNote(draft, promise);
   return (
     <div className="flex flex-col gap-5">
       <Group title="The drink">

@@ -89,10 +89,10 @@ function NewBatchForm({ timeZone, now, proposal }: { timeZone: string; now: numb
         <form onSubmit={(event) => void send(event)} noValidate className="flex flex-col gap-5">
           {proposal && (
             <p className="type-body border-l-[3px] border-rule2 pl-3">
-              <Sentence>{`Promised ${proposal.expected_original_gravity.value.lo.toFixed(3)} to ${proposal.expected_original_gravity.value.hi.toFixed(3)}. Write the gravity as you read it. ${proposal.neck_reason}`}</Sentence>
+              <Sentence>{`Promised ${proposal.expected_original_gravity.value.lo.toFixed(3)} to ${proposal.expected_original_gravity.value.hi.toFixed(3)}. Write the gravity as you read it.`}</Sentence>
             </p>
           )}
-          <BatchFields draft={draft} errors={errors} onChange={setDraft} latest={toLocal(now, timeZone)} fresh>
+          <BatchFields draft={draft} errors={errors} onChange={setDraft} latest={toLocal(now, timeZone)} fresh promise={proposal ? { volumeL: proposal.volume_l, vesselL: proposal.vessel_l, neck: proposal.neck, fits: proposal.fits, sentence: proposal.neck_reason } : undefined}>
             <Select label="Sensor" value={draft.sensor} onChange={(event) => setDraft({ ...draft, sensor: event.target.value })} error={errors.sensor} hint={free.length === 0 ? 'No free sensor: readings by hand work alone.' : undefined}>
               <option value="">none</option>
               {free.map((sensor) => (

@@ -1,4 +1,6 @@
+import { neckForecast } from '@/lib/core/must/neck';
 import type { DrinkKind, Neck } from '@/lib/core/types';
+import type { Range } from '@/lib/core/units/range';
 
 /** What is usual for a kind of drink where the yeast's own packet says nothing else. */
 export interface Usual {
@@ -21,19 +23,35 @@ export const USUAL: Record<DrinkKind, Usual> = {
   wine: { attenuation: { min: 95, max: 106 }, tolerance: 14, temperature: { min: 17, max: 24 }, colour: 'damson', neck: 'blow_off' },
 };
 
-/** Room that foam wants over the drink while it works, as a share of the vessel: common practice. */
-const FOAM_ROOM: Record<DrinkKind, number> = { beer: 0.2, cider: 0.1, mead: 0.15, wine: 0.15 };
+/** Points that a must of this kind falls where nobody told its gravity: common practice. */
+const USUAL_FALL: Record<DrinkKind, Range> = {
+  beer: { lo: 30, value: 38, hi: 50 },
+  cider: { lo: 42, value: 50, hi: 60 },
+  mead: { lo: 70, value: 90, hi: 115 },
+  wine: { lo: 70, value: 85, hi: 100 },
+};
 
-/** One sentence about the room over the drink; null until both volumes are known. */
-export function headspaceNote(kind: DrinkKind, volumeL: number | null, vesselL: number | null, neck: Neck): { text: string; tight: boolean } | null {
+export interface Room {
+  kind: DrinkKind;
+  volumeL: number | null;
+  vesselL: number | null;
+  neck: Neck;
+  originalGravity: number | null;
+  /** Per cent. */
+  attenuation: { min: number | null; max: number | null };
+}
+
+function fallOf({ kind, originalGravity, attenuation: { min, max } }: Room): Range {
+  if (originalGravity === null || !(originalGravity > 1) || min === null || max === null || !(max >= min)) return USUAL_FALL[kind];
+  const points = (originalGravity - 1) * 1000;
+  return { lo: (points * min) / 100, value: (points * (min + max)) / 200, hi: (points * max) / 100 };
+}
+
+/** One sentence about the room over the drink, by the rule that the must sheet has; null until both volumes are known. */
+export function headspaceNote(room: Room): { text: string; tight: boolean } | null {
+  const { kind, volumeL, vesselL, neck } = room;
   if (volumeL === null || vesselL === null || !(volumeL > 0) || !(vesselL > 0)) return null;
   if (volumeL > vesselL) return { text: 'The vessel does not hold that much.', tight: true };
-  const room = vesselL - volumeL;
-  const share = room / vesselL;
-  const figures = `${Number(room.toFixed(2))} L of room, ${Math.round(share * 100)} %`;
-  if (share >= FOAM_ROOM[kind]) return { text: `${figures}: enough for foam.`, tight: false };
-  const wanted = `${Math.round(FOAM_ROOM[kind] * 100)} % is usual while it foams`;
-  return neck === 'blow_off'
-    ? { text: `${figures}; ${wanted}. The blow-off tube carries the foam away.`, tight: false }
-    : { text: `${figures}; ${wanted}. Begin with a blow-off tube, or fill less.`, tight: true };
+  const forecast = neckForecast(kind, { lo: volumeL, value: volumeL, hi: volumeL }, vesselL, fallOf(room));
+  return { text: forecast.sentence, tight: forecast.startOn === 'blow_off' && neck !== 'blow_off' };
 }

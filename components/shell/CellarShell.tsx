@@ -16,7 +16,7 @@ export function CellarShell({ children }: { children: ReactNode }) {
   const live = useLiveChanges();
   useBelonging();
   const glance = useGlance();
-  const { counts } = useAlerts({ state: 'open', limit: 100 });
+  const { counts } = useAlerts(glance.may('alerts.read') ? { state: 'open', limit: 100 } : null);
   const places = placesFor(glance.may, counts?.open ?? 0);
   return (
     <>

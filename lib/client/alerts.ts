@@ -6,8 +6,9 @@ import { isOfBatch } from './batches';
 import { sendJson, withQuery } from './fetcher';
 import { isPath, refresh, useResource } from './use-resource';
 
-export function useAlerts(query: { state?: (typeof ALERT_STATES)[number]; batch?: string; limit?: number; cursor?: string } = {}) {
-  const { data, ...rest } = useResource<z.infer<typeof alertList>>(withQuery('/alerts', query));
+/** Null waits: until it is known that the person may see them. */
+export function useAlerts(query: { state?: (typeof ALERT_STATES)[number]; batch?: string; limit?: number; cursor?: string } | null = {}) {
+  const { data, ...rest } = useResource<z.infer<typeof alertList>>(query && withQuery('/alerts', query));
   return { alerts: data?.items, counts: data?.counts, nextCursor: data?.next_cursor ?? null, ...rest };
 }
 

@@ -2,6 +2,8 @@ import { describe, expect, it } from 'vitest';
 import { batchToCreate, batchToUpdate, draftOf, newDraft, withKind } from '@/components/batch/batch-form';
 import { emptyDraft, entryOf, fromLocal, toLocal } from '@/components/batch/entry-form';
 import { headspaceNote, USUAL } from '@/components/batch/kinds';
+import { roomNote } from '@/components/batch/room';
+import { neckForecast } from '@/lib/core/must/neck';
 import { DRINK_KINDS } from '@/lib/core/types';
 import { batch, NOW } from './fixtures';
 
@@ -79,12 +81,31 @@ describe('changing the set-up', () => {
 });
 
 describe('room over the drink', () => {
-  it('is enough, or asks for a tube, or for less', () => {
-    expect(headspaceNote('beer', 8, 10, 'airlock')).toEqual({ text: '2 L of room, 20 %: enough for foam.', tight: false });
-    expect(headspaceNote('beer', 9.5, 10, 'airlock')).toMatchObject({ tight: true });
-    expect(headspaceNote('beer', 9.5, 10, 'blow_off')).toMatchObject({ tight: false });
-    expect(headspaceNote('beer', 11, 10, 'blow_off')).toMatchObject({ tight: true });
-    expect(headspaceNote('beer', null, 10, 'airlock')).toBeNull();
-    expect(headspaceNote('beer', NaN, 10, 'airlock')).toBeNull();
+  const room = { kind: 'beer', volumeL: 8, vesselL: 10, neck: 'airlock', originalGravity: 1.05, attenuation: { min: 72, max: 80 } } as const;
+
+  it('says what the must sheet says of the same drink in the same vessel', () => {
+    const volume = { lo: 8, value: 8, hi: 8 };
+    const { sentence, startOn } = neckForecast('beer', volume, 10, { lo: 36, value: 38, hi: 40 });
+    expect(headspaceNote(room)).toEqual({ text: sentence, tight: startOn === 'blow_off' });
+    expect(headspaceNote({ ...room, neck: 'blow_off' })).toMatchObject({ tight: false });
+  });
+
+  it('is too little where foam may reach the neck, and no room at all where it does not fit', () => {
+    expect(headspaceNote({ ...room, volumeL: 9.5 })).toMatchObject({ tight: true });
+    expect(headspaceNote({ ...room, volumeL: 11 })).toEqual({ text: 'The vessel does not hold that much.', tight: true });
+    expect(headspaceNote({ ...room, kind: 'mead', volumeL: 4.5, vesselL: 20 })).toMatchObject({ tight: false });
+  });
+
+  it('goes by what is usual where the gravity is not told, and says nothing without both volumes', () => {
+    expect(headspaceNote({ ...room, originalGravity: null })?.text).toMatch(/gas|Full/);
+    expect(headspaceNote({ ...room, volumeL: null })).toBeNull();
+    expect(headspaceNote({ ...room, volumeL: NaN })).toBeNull();
+  });
+
+  it('is the sheet’s own word until a volume is changed', () => {
+    const draft = { ...newDraft('beer', NOW, ZONE), volume: '8', vessel: '10', neck: 'airlock' as const };
+    const promise = { volumeL: 8, vesselL: 10, neck: 'blow_off' as const, fits: true, sentence: 'Start on a blow-off tube: the pulp stands high.' };
+    expect(roomNote(draft, promise)).toEqual({ text: promise.sentence, tight: true });
+    expect(roomNote({ ...draft, volume: '7' }, promise)?.text).not.toBe(promise.sentence);
   });
 });
