@@ -15,14 +15,15 @@ import { useKeptSince } from '@/lib/client/kept';
 import { useKeepingAhead } from '@/lib/client/use-keeping-ahead';
 import { useLiveState } from '@/lib/client/use-live-changes';
 import { Herald } from './Herald';
-import { jobsOf, nothingDue } from './jobs';
+import { useTicks } from '@/components/rounds/use-ticks';
+import { useJobs } from '@/lib/client/jobs';
+import { nothingDue, todaysJobs } from './jobs';
 import { Lane, PhoneLane } from './Lane';
 import { GROUPS, laneFigures, laneView } from './lanes';
 import { EmptyLane, LaneGuard, LoadingLane } from './LaneStates';
 import { ShelfAxis } from './ShelfAxis';
 import { ShelfKey } from './ShelfKey';
 import { PhoneToday, Today } from './Today';
-import { useJobTicks } from './use-job-ticks';
 import { placeLanes, placesOf, useSlides, type Places } from './placement';
 import { useShelfKeys } from './use-shelf-keys';
 
@@ -50,23 +51,25 @@ export function Shelf() {
   const { shelf, error, loading, retry } = useShelf(now === null ? null : askedSpan(now));
   useKeepingAhead(shelf?.items);
   const mayTake = may('alerts.acknowledge');
-  const open = useAlerts({ state: 'open', limit: 100 });
-  const taken = useAlerts({ state: 'acknowledged', limit: 100 });
+  const [maySee, mayWalk, mayDo] = [may('alerts.read'), may('jobs.read'), may('jobs.do')];
+  const open = useAlerts(maySee ? { state: 'open', limit: 100 } : null);
+  const taken = useAlerts(maySee ? { state: 'acknowledged', limit: 100 } : null);
+  const rounds = useJobs(mayWalk ? { state: 'open', order: 'due', limit: 100 } : null);
   const alerts = useMemo(() => (open.alerts && taken.alerts ? [...open.alerts, ...taken.alerts] : undefined), [open.alerts, taken.alerts]);
-  const ticks = useJobTicks();
+  const ticks = useTicks();
   const list = useRef<HTMLDivElement>(null);
   const [held, setHeld] = useState<Places | null>(null);
 
   const views = useMemo(() => (shelf && now !== null ? shelf.items.map((lane) => laneView(lane, alerts, now, timeZone)) : []), [shelf, alerts, now, timeZone]);
   const groups = useMemo(() => placeLanes(views, held), [views, held]);
-  const jobs = useMemo(() => (now === null ? [] : jobsOf(views, alerts, now, timeZone)), [views, alerts, now, timeZone]);
+  const jobs = useMemo(() => (now === null ? [] : todaysJobs(rounds.jobs ?? [], ticks.ticked, now, timeZone)), [rounds.jobs, ticks.ticked, now, timeZone]);
 
-  const { take } = ticks;
-  const takeFirst = useCallback(() => {
-    const first = jobs.find((job) => job.alertId !== null && job.who === null);
-    if (first && mayTake) void take(first);
-  }, [jobs, mayTake, take]);
-  useShelfKeys(list, takeFirst);
+  const { tick, ticked } = ticks;
+  const tickFirst = useCallback(() => {
+    const first = jobs.find(({ job }) => !ticked.has(job.id));
+    if (first && mayDo) tick(first.job);
+  }, [jobs, mayDo, tick, ticked]);
+  useShelfKeys(list, tickFirst);
   useSlides(list, groups.map((group) => group.views.map((view) => view.lane.id).join()).join('|'));
 
   if (now === null || (!shelf && !error)) return <ShelfLoading />;
@@ -81,7 +84,8 @@ export function Shelf() {
   const phone = layout === 'strip';
   const span = { from: now - DAYS[layout].back * DAY, to: now + DAYS[layout].ahead * DAY };
   const staleAt = live.state === 'offline' || error || kept !== null ? Date.parse(shelf.now) / 1000 : null;
-  const today = { jobs, ticks, nothing: nothingDue(views, now, timeZone), now, timeZone, mayTake, loading: loading || ((open.loading || taken.loading) && may('alerts.read')) };
+  const nothing = !mayWalk ? 'The rounds are for those who work here.' : rounds.error && !rounds.jobs ? 'The rounds could not be read; trying again.' : nothingDue(rounds.jobs ?? [], now, timeZone);
+  const today = { jobs, ticks, nothing, now, timeZone, mayDo, loading: loading || (mayWalk && rounds.loading) };
   return (
     <div className="[--call:clamp(330px,28.06vw,404px)] [--vessel:308px]">
       <h1 className="heard-only">Shelf</h1>

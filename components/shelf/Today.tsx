@@ -1,65 +1,94 @@
 'use client';
 
 import Link from 'next/link';
+import { useState } from 'react';
 import { clock, dayName } from '@/components/charts/zone';
+import type { Ticks } from '@/components/rounds/use-ticks';
 import { Box } from '@/components/ui/Box';
 import { Button } from '@/components/ui/Button';
 import { Sentence } from '@/components/ui/Sentence';
-import type { Job } from './jobs';
-import type { JobTicks } from './use-job-ticks';
+import { ClientError } from '@/lib/client/fetcher';
+import { takeJob } from '@/lib/client/jobs';
+import type { TodayJob } from './jobs';
 
 interface TodayProps {
-  jobs: readonly Job[];
-  ticks: JobTicks;
-  /** Said when there is nothing to do. */
+  jobs: readonly TodayJob[];
+  ticks: Ticks;
+  /** Said when there is nothing to do; for a guest, who the rounds are for. */
   nothing: string;
   now: number;
   timeZone: string;
-  mayTake: boolean;
+  mayDo: boolean;
   loading: boolean;
 }
 
 const SHOWN = 5;
 const SHOWN_ON_PHONE = 2;
 
-const isTaken = (job: Job, ticks: JobTicks) => job.who !== null || ticks.waiting.has(job.key);
+const firstName = (name: string) => name.trim().split(/\s+/)[0] ?? name;
+const tagOf = ({ job }: TodayJob) => job.batch?.tag ?? null;
 
-function JobBox({ job, ticks, mayTake }: { job: Job; ticks: JobTicks; mayTake: boolean }) {
-  const taken = isTaken(job, ticks);
-  return <Box ticked={taken} notYet={job.alertId === null} disabled={taken || !mayTake} label={`I have it: ${job.text}`} onTick={() => void ticks.take(job)} className="max-strip:pt-2.5" />;
+function JobBox({ row, ticks, mayDo }: { row: TodayJob; ticks: Ticks; mayDo: boolean }) {
+  const done = ticks.ticked.has(row.job.id);
+  return <Box ticked={done} disabled={!mayDo} label={done ? `Take back: ${row.job.title}` : `Done: ${row.job.title}`} onTick={(on) => (on ? ticks.tick(row.job) : ticks.untick(row.job))} className="max-strip:pt-2.5" />;
 }
 
-function JobTime({ job }: { job: Job }) {
+function JobTime({ row, children }: { row: TodayJob; children?: React.ReactNode }) {
   return (
     <p className="type-label text-ink2">
-      <span className={job.late ? 'text-madder' : 'text-ink'} style={{ fontWeight: 700 }}>
-        {job.time}
+      <span className={row.late ? 'text-madder' : 'text-ink'} style={{ fontWeight: 700 }}>
+        {row.time}
       </span>{' '}
-      {job.note}
+      {row.note}
+      {children}
     </p>
   );
 }
 
-function JobName({ job }: { job: Job }) {
+function JobName({ row, done }: { row: TodayJob; done: boolean }) {
+  const { job } = row;
   return (
-    <Link href={`/batches/${job.batchId}`} className="two-lines py-px wide:block wide:truncate text-[0.96875rem]/[1.3125rem] font-[480] text-ink no-underline hover:underline" title={job.text}>
-      {job.text}
+    <Link href={job.batch ? `/batches/${job.batch.id}` : '/rounds'} className={`two-lines py-px text-[0.96875rem]/[1.3125rem] font-[480] no-underline hover:underline wide:block wide:truncate ${done ? 'text-ink2 line-through' : 'text-ink'}`} title={job.title}>
+      {job.title}
     </Link>
   );
 }
 
-function JobWho({ job, ticks, mayTake }: { job: Job; ticks: JobTicks; mayTake: boolean }) {
-  const tag = job.tag === null ? '' : `tag ${job.tag} · `;
-  if (ticks.waiting.has(job.key)) return <p className="type-label text-ink2">{tag}taking it</p>;
-  if (job.who !== null) return <p className="type-label text-ink2">{`${tag}${job.who} has it`}</p>;
-  if (job.alertId === null) return <p className="type-label text-ink2">{`${tag}not yet`}</p>;
+/** Takes a job in hand, its alert with it. */
+function useTake(ticks: Ticks) {
+  const [taking, setTaking] = useState<string | null>(null);
+  const take = (row: TodayJob) => {
+    setTaking(row.job.id);
+    takeJob(row.job.id)
+      .catch((error: unknown) => ticks.fail(`${row.job.title} was not taken. ${error instanceof ClientError ? error.message : 'Try again.'}`))
+      .finally(() => setTaking(null));
+  };
+  return { taking, take };
+}
+
+function JobWho({ row, ticks, mayDo }: { row: TodayJob; ticks: Ticks; mayDo: boolean }) {
+  const { taking, take } = useTake(ticks);
+  const { job, late } = row;
+  const tag = tagOf(row) === null ? '' : `tag ${tagOf(row)} · `;
+  if (ticks.ticked.has(job.id)) {
+    return (
+      <p role="status" className="type-label text-ink2">
+        done.{' '}
+        <button type="button" className="underline underline-offset-2" onClick={() => ticks.untick(job)}>
+          take it back
+        </button>
+      </p>
+    );
+  }
+  if (taking === job.id) return <p className="type-label text-ink2">{tag}taking it</p>;
+  if (job.taken_by) return <p className="type-label truncate text-ink2">{`${tag}${firstName(job.taken_by.name)} has it`}</p>;
   return (
-    <p className={`type-label ${job.late ? 'text-madder' : 'text-ink2'}`} style={{ fontWeight: job.late ? 600 : 500 }}>
+    <p className={`type-label ${late ? 'text-madder' : 'text-ink2'}`} style={{ fontWeight: late ? 600 : 500 }}>
       {tag}nobody
-      {mayTake && (
+      {mayDo && (
         <>
           ,{' '}
-          <button type="button" className="underline underline-offset-2" onClick={() => void ticks.take(job)} aria-label={`take it: ${job.text}`}>
+          <button type="button" className="underline underline-offset-2" onClick={() => take(row)} aria-label={`take it: ${job.title}`}>
             take it
           </button>
         </>
@@ -69,14 +98,15 @@ function JobWho({ job, ticks, mayTake }: { job: Job; ticks: JobTicks; mayTake: b
 }
 
 /** `2 to do, 1 in hand` */
-function countWords(jobs: readonly Job[]): string {
-  const taken = jobs.filter((job) => job.who !== null).length;
-  const open = jobs.length - taken;
+function countWords(jobs: readonly TodayJob[], ticks: Ticks): string {
+  const left = jobs.filter((row) => !ticks.ticked.has(row.job.id));
+  const taken = left.filter((row) => row.job.taken_by !== null).length;
+  const open = left.length - taken;
   return [open > 0 ? `${open} to do` : null, taken > 0 ? `${taken} in hand` : null].filter((part) => part !== null).join(', ');
 }
 
-/** The day's jobs above the lanes: late ones first, in madder with the word. */
-export function Today({ jobs, ticks, nothing, now, timeZone, mayTake, loading }: TodayProps) {
+/** The day's rounds above the lanes: late ones first, in madder with the word. */
+export function Today({ jobs, ticks, nothing, now, timeZone, mayDo, loading }: TodayProps) {
   const shown = jobs.slice(0, SHOWN);
   const more = jobs.length - shown.length;
   return (
@@ -89,11 +119,11 @@ export function Today({ jobs, ticks, nothing, now, timeZone, mayTake, loading }:
           {dayName(now, timeZone)}, {clock(now, timeZone)}
         </p>
         <p className="type-label leading-5! text-ink2">
-          {!loading && countWords(jobs)}
+          {!loading && countWords(jobs, ticks)}
           {more > 0 && (
             <>
               {', '}
-              <Link href="/alerts" className="text-ink underline underline-offset-2">
+              <Link href="/rounds" className="text-ink underline underline-offset-2">
                 and {more} more
               </Link>
             </>
@@ -103,13 +133,13 @@ export function Today({ jobs, ticks, nothing, now, timeZone, mayTake, loading }:
       {shown.length === 0 ? (
         <p className="col-span-full flex items-center border-l px-4 py-3 text-[0.96875rem]/[1.3125rem] wide:col-span-5">{!loading && <span><Sentence>{nothing}</Sentence></span>}</p>
       ) : (
-        shown.map((job) => (
-          <div key={job.key} className="flex min-w-0 gap-3 px-3 pb-1.5 pt-[9px] max-wide:border-t max-wide:odd:border-l max-wide:even:pl-(--margin) wide:border-l">
-            <JobBox job={job} ticks={ticks} mayTake={mayTake} />
+        shown.map((row) => (
+          <div key={row.job.id} className="flex min-w-0 gap-3 px-3 pb-1.5 pt-[9px] max-wide:border-t max-wide:odd:border-l max-wide:even:pl-(--margin) wide:border-l">
+            <JobBox row={row} ticks={ticks} mayDo={mayDo} />
             <div className="min-w-0 flex-1">
-              <JobTime job={job} />
-              <JobName job={job} />
-              <JobWho job={job} ticks={ticks} mayTake={mayTake} />
+              <JobTime row={row} />
+              <JobName row={row} done={ticks.ticked.has(row.job.id)} />
+              <JobWho row={row} ticks={ticks} mayDo={mayDo} />
             </div>
           </div>
         ))
@@ -124,38 +154,38 @@ export function Today({ jobs, ticks, nothing, now, timeZone, mayTake, loading }:
 }
 
 /** Two jobs at the top of a phone, the rest behind one line. */
-export function PhoneToday({ jobs, ticks, nothing, mayTake, loading }: TodayProps) {
+export function PhoneToday({ jobs, ticks, nothing, mayDo, loading }: TodayProps) {
+  const { taking, take } = useTake(ticks);
   const shown = jobs.slice(0, SHOWN_ON_PHONE);
   const more = jobs.length - shown.length;
   return (
     <section aria-label="Today" className="border-b bg-desk px-(--margin)">
-      {shown.map((job) => (
-        <div key={job.key} className="flex flex-wrap items-center justify-end gap-x-3 border-b py-1">
-          <div className="flex min-w-0 flex-1 basis-[11rem] items-center">
-            <JobBox job={job} ticks={ticks} mayTake={mayTake} />
-            <div className="-ml-3 min-w-0 flex-1">
-              <p className="type-label text-ink2">
-                <span className={job.late ? 'text-madder' : 'text-ink'} style={{ fontWeight: 700 }}>
-                  {job.time}
-                </span>{' '}
-                {job.note}
-                {job.tag !== null && `, tag ${job.tag}`}
-              </p>
-              <JobName job={job} />
+      {shown.map((row) => {
+        const { job } = row;
+        const done = ticks.ticked.has(job.id);
+        return (
+          <div key={job.id} className="flex flex-wrap items-center justify-end gap-x-3 border-b py-1">
+            <div className="flex min-w-0 flex-1 basis-[11rem] items-center">
+              <JobBox row={row} ticks={ticks} mayDo={mayDo} />
+              <div className="-ml-3 min-w-0 flex-1">
+                <JobTime row={row}>{tagOf(row) !== null && `, tag ${tagOf(row)}`}</JobTime>
+                <JobName row={row} done={done} />
+              </div>
             </div>
+            {done ? (
+              <Button onClick={() => ticks.untick(job)}>Take it back</Button>
+            ) : job.taken_by ? (
+              <span className="type-label text-ink2">{firstName(job.taken_by.name)} has it</span>
+            ) : (
+              mayDo && (
+                <Button onClick={() => take(row)} disabled={taking === job.id} aria-label={`Take it: ${job.title}`}>
+                  Take it
+                </Button>
+              )
+            )}
           </div>
-          {job.who !== null ? (
-            <span className="type-label text-ink2">{job.who}</span>
-          ) : (
-            job.alertId !== null &&
-            mayTake && (
-              <Button onClick={() => void ticks.take(job)} disabled={ticks.waiting.has(job.key)} aria-label={`Take it: ${job.text}`}>
-                Take it
-              </Button>
-            )
-          )}
-        </div>
-      ))}
+        );
+      })}
       {ticks.failed && (
         <p role="alert" className="type-label py-1.5 text-madder">
           {ticks.failed}
@@ -165,9 +195,9 @@ export function PhoneToday({ jobs, ticks, nothing, mayTake, loading }: TodayProp
         <p className="flex min-h-11 items-center py-2 text-[0.9375rem]">{!loading && <span><Sentence>{nothing}</Sentence></span>}</p>
       ) : (
         <div className="flex min-h-11 flex-wrap items-center justify-between gap-x-4">
-          <span className="type-label text-ink2">{more > 0 ? `${more} more today` : countWords(jobs)}</span>
-          <Link href="/alerts" className="type-label flex min-h-11 items-center text-ink2 no-underline">
-            all alerts ›
+          <span className="type-label text-ink2">{more > 0 ? `${more} more today` : countWords(jobs, ticks)}</span>
+          <Link href="/rounds" className="type-label flex min-h-11 items-center text-ink2 no-underline">
+            all rounds ›
           </Link>
         </div>
       )}

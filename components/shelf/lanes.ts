@@ -1,4 +1,5 @@
 import { clock, dayName, MONTHS, wallTime, when } from '@/components/charts/zone';
+import { gravityText, volumeText } from '@/components/ui/units';
 import type { AlertBody } from '@/lib/contracts/alerts';
 import type { CallBody } from '@/lib/contracts/assessment';
 import type { LaneBody } from '@/lib/contracts/batches';
@@ -143,7 +144,7 @@ export function dayOf(pitchedAt: string | null, now: number, timeZone: string): 
   return `day ${Math.max(0, Math.round((noon(now) - noon(Date.parse(pitchedAt) / 1000)) / 86_400_000))}`;
 }
 
-export const litres = (volume: number) => `${Number(volume.toFixed(1))} L`;
+export const litres = (volume: number) => volumeText(volume, 1);
 
 export interface LaneFigures {
   gravity: string;
@@ -171,9 +172,9 @@ export function laneFigures(lane: LaneBody, staleAt: number | null, now: number,
   const judged = lane.assessment?.gravity?.value;
   const abv = lane.assessment?.abv_percent?.value;
   if (judged !== undefined) {
-    return { gravity: judged.toFixed(3), under: staleAt !== null ? `at ${clock(staleAt, timeZone)}` : typeof abv === 'number' ? `${Math.max(0, abv).toFixed(1)} % so far` : '' };
+    return { gravity: gravityText(judged), under: staleAt !== null ? `at ${clock(staleAt, timeZone)}` : typeof abv === 'number' ? `${Math.max(0, abv).toFixed(1)} % so far` : '' };
   }
   const known = lastKnown(lane);
-  if (known) return { gravity: known.gravity.toFixed(3), under: `${known.byHand ? 'by hand' : 'at'} ${when(known.at, now, timeZone)}` };
-  return lane.original_gravity === null ? { gravity: '–', under: '' } : { gravity: lane.original_gravity.toFixed(3), under: 'at pitch' };
+  if (known) return { gravity: gravityText(known.gravity), under: `${known.byHand ? 'by hand' : 'at'} ${when(known.at, now, timeZone)}` };
+  return lane.original_gravity === null ? { gravity: '–', under: '' } : { gravity: gravityText(lane.original_gravity), under: 'at pitch' };
 }

@@ -4,14 +4,14 @@ import { useEffect, type RefObject } from 'react';
 
 const typing = (target: EventTarget | null) => target instanceof HTMLElement && target.closest('input:not([type=checkbox]), textarea, select, [contenteditable]') !== null;
 
-/** Arrows go from lane to lane, Home and End to the ends; Enter opens, as on any link; `t` takes the first job. */
-export function useShelfKeys(list: RefObject<HTMLElement | null>, takeFirst: () => void): void {
+/** Arrows go from lane to lane, Home and End to the ends; Enter opens, as on any link; `t` ticks the first job. */
+export function useShelfKeys(list: RefObject<HTMLElement | null>, tickFirst: () => void): void {
   useEffect(() => {
     const onKey = (event: KeyboardEvent) => {
       if (event.defaultPrevented || event.ctrlKey || event.metaKey || event.altKey || typing(event.target)) return;
       if (event.key === 't') {
         event.preventDefault();
-        takeFirst();
+        tickFirst();
         return;
       }
       if (!['ArrowDown', 'ArrowUp', 'Home', 'End'].includes(event.key)) return;
@@ -28,5 +28,5 @@ export function useShelfKeys(list: RefObject<HTMLElement | null>, takeFirst: () 
     };
     document.addEventListener('keydown', onKey);
     return () => document.removeEventListener('keydown', onKey);
-  }, [list, takeFirst]);
+  }, [list, tickFirst]);
 }

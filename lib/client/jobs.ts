@@ -5,9 +5,9 @@ import type { CalendarBody, createJob as createSchema, JOB_STATES, JobBody, JobL
 import { sendJson, withQuery } from './fetcher';
 import { isPath, refresh, useResource } from './use-resource';
 
-/** The rounds. `until` keeps to what is due by then. */
-export function useJobs(query: { state?: (typeof JOB_STATES)[number]; until?: string; batch?: string; lot?: string; order?: 'due' | 'walk'; limit?: number; cursor?: string } = {}) {
-  const { data, ...rest } = useResource<JobList>(withQuery('/jobs', query));
+/** The rounds. `until` keeps to what is due by then; null waits. */
+export function useJobs(query: { state?: (typeof JOB_STATES)[number]; until?: string; batch?: string; lot?: string; order?: 'due' | 'walk'; limit?: number; cursor?: string } | null = {}) {
+  const { data, ...rest } = useResource<JobList>(query && withQuery('/jobs', query));
   return { jobs: data?.items, now: data?.now, nextCursor: data?.next_cursor ?? null, ...rest };
 }
 

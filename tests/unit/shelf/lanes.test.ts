@@ -1,5 +1,4 @@
 import { describe, expect, it } from 'vitest';
-import { jobsOf, nothingDue } from '@/components/shelf/jobs';
 import { alertsOf, dayOf, inOrder, laneFigures, laneView } from '@/components/shelf/lanes';
 import { placeLanes, placesOf } from '@/components/shelf/placement';
 import { anAlert, aLane, at, NOW } from './make';
@@ -97,38 +96,12 @@ describe('the shelf', () => {
   });
 });
 
-describe('today’s jobs', () => {
-  const lane = aLane({ name: 'Oat stout', tag: 5 });
-
-  it('are late when nobody took them in time: an hour to act, four to look', () => {
-    const opened = (hours: number) => new Date((NOW - hours * 3600) * 1000).toISOString();
-    const late = (level: 'act' | 'check', hours: number) => jobsOf([], [anAlert(lane, { level, opened_at: opened(hours) })], NOW, 'UTC')[0]?.late;
-    expect([late('act', 0.9), late('act', 1.1), late('check', 3.9), late('check', 4.1)]).toEqual([false, true, false, true]);
-  });
-
-  it('put late ones first, then those nobody has', () => {
-    const fresh = anAlert(lane, { call: 'temperature', kind: 'low', opened_at: new Date((NOW - 600) * 1000).toISOString() });
-    const taken = anAlert(lane, { call: 'sensor', kind: 'silent', state: 'acknowledged', acknowledged_by: { id: lane.id, name: 'Ines Varga' }, look_again_at: at('2026-10-15T18:00Z') });
-    const late = anAlert(lane, { opened_at: at('2026-10-15T07:00Z') });
-    const jobs = jobsOf([], [taken, fresh, late], NOW, 'UTC');
-    expect(jobs.map((job) => job.text)).toEqual(['Look at Oat stout', 'Warm Oat stout', 'See to the sensor in Oat stout']);
-    expect(jobs[2]).toMatchObject({ time: '18:00', note: 'in 3 h 28 min', who: 'Ines', late: false });
-  });
-
-  it('come back late when whoever has it meant to have looked by now', () => {
-    const taken = anAlert(lane, { state: 'acknowledged', acknowledged_by: { id: lane.id, name: 'Ines Varga' }, look_again_at: at('2026-10-15T12:00Z') });
-    expect(jobsOf([], [taken], NOW, 'UTC')[0]).toMatchObject({ late: true, note: 'since 12:00', who: 'Ines' });
-  });
-
-  it('leave out what may be done any day', () => {
-    expect(jobsOf([], [anAlert(lane, { call: 'rack', level: 'know' })], NOW, 'UTC')).toEqual([]);
-  });
-
-  it('hold what falls due today, and nothing of tomorrow', () => {
-    const due = (time: string) => viewOf({ name: 'Perry', neck: 'blow_off', calls: { neck: { verdict: 'soon', expected_at: at(time) } } });
-    expect(jobsOf([due('2026-10-15T19:30Z')], [], NOW, 'UTC')).toMatchObject([{ text: 'Swap the tube on Perry', time: '19:30', alertId: null }]);
-    expect(jobsOf([due('2026-10-16T14:00Z')], [], NOW, 'UTC')).toEqual([]);
-    expect(nothingDue([due('2026-10-16T14:00Z')], NOW, 'UTC')).toBe('Nothing due today. Next: Fri 14:00.');
-    expect(nothingDue([], NOW, 'UTC')).toBe('Nothing due today.');
+describe('a call that somebody overruled', () => {
+  it('asks nothing on the shelf any more, and what else is wrong speaks', () => {
+    const calls = { stalled: { verdict: 'yes', kind: 'stuck' }, temperature: { verdict: 'yes', kind: 'low' } } as const;
+    const set = [{ id: '00000000-0000-4000-8000-0000000000ff', call: 'stalled' as const, instead: 'no' as const, at: at('2026-10-15T12:00Z'), by: 'Una', reason: 'Read by hand.' }];
+    expect(viewOf({ calls }).attention.call).toBe('stalled');
+    expect(viewOf({ calls, overruled: set }).attention.call).toBe('temperature');
+    expect(viewOf({ calls: { stalled: calls.stalled }, overruled: set }).attention.group).toBe('leave');
   });
 });
