@@ -43,6 +43,9 @@ export const ACTIONS = {
   'members.manage': { roles: ['keeper'], says: 'invite, change and remove people' },
   'cellar.manage': { roles: ['keeper'], says: 'change the cellar’s settings' },
   'audit.read': { roles: ['keeper'], says: 'read the trail of who did what' },
+  'data.import': { roles: ['keeper', 'brewer'], says: 'bring data in' },
+  'data.export': { roles: ['keeper', 'brewer'], says: 'take data out' },
+  'webhooks.manage': { roles: ['keeper'], says: 'set up webhooks' },
 } as const satisfies Record<Action, { roles: readonly Role[]; says: string }>;
 
 /** Who acts, and in which cellar. */

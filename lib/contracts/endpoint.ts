@@ -19,6 +19,8 @@ export interface Endpoint {
   params?: z.ZodObject;
   query?: z.ZodType;
   body?: z.ZodType;
+  /** Where the body may be larger than a form. */
+  limitBytes?: number;
   /** Null: no JSON body. */
   response: z.ZodType | null;
   status: 200 | 201 | 202 | 204;

@@ -35,5 +35,8 @@ export const ACTION_NAMES = [
   'members.manage',
   'cellar.manage',
   'audit.read',
+  'data.import',
+  'data.export',
+  'webhooks.manage',
 ] as const;
 export type Action = (typeof ACTION_NAMES)[number];

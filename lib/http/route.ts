@@ -60,7 +60,7 @@ async function answer<E extends Endpoint>(endpoint: E, handle: (context: RouteCo
     // Next.js gives none where the path has none.
     params: parseParams(endpoint, (await rawParams) ?? {}),
     query: parse(endpoint.query, queryOf(request), 'Some values of the query are wrong.'),
-    body: endpoint.body ? parse(endpoint.body, await readJson(request), 'Some values are wrong.') : undefined,
+    body: endpoint.body ? parse(endpoint.body, await readJson(request, endpoint.limitBytes), 'Some values are wrong.') : undefined,
     headers,
     // The conditional types of the context follow the endpoint's literal; the checks above make them hold.
   } as RouteContext<E>;

@@ -1,0 +1,67 @@
+import { QueryTypes, type Transaction } from 'sequelize';
+import { database } from '../client';
+
+export interface FloatStay {
+  sensorId: number;
+  name: string;
+  from: Date;
+  to: Date | null;
+}
+
+/** Which floats were in a batch, in time. */
+export function floatStays(batchId: string): Promise<FloatStay[]> {
+  return database().query<FloatStay>(
+    `select a.sensor_id as "sensorId", s.name, a.from_at as "from", a.to_at as "to" from assignments a join sensors s on s.id = a.sensor_id where a.batch_id = $batchId order by a.from_at, a.id`,
+    { bind: { batchId }, type: QueryTypes.SELECT },
+  );
+}
+
+export interface ArchiveReading {
+  measuredAt: string;
+  receivedAt: string;
+  gravity: number | null;
+  gravitySent: number | null;
+  inclination: number | null;
+  temperature: number | null;
+  battery: number | null;
+  signal: number | null;
+  foam: number | null;
+  sequence: number | null;
+}
+
+const UTC = (column: string) => `to_char(${column} at time zone 'utc', 'YYYY-MM-DD"T"HH24:MI:SS.US"Z"')`;
+
+/** A stay's readings in pages, in order, each as it was kept: times to the microsecond, `real` figures in their shortest form. */
+export async function* readingsOfStay({ sensorId, from, to }: FloatStay, pageSize = 5_000): AsyncGenerator<ArchiveReading[]> {
+  let after: string | null = null;
+  for (;;) {
+    const rows: ArchiveReading[] = await database().query<ArchiveReading>(
+      `select ${UTC('measured_at')} as "measuredAt", ${UTC('received_at')} as "receivedAt", gravity, gravity_sent as "gravitySent", inclination, temperature, battery, signal, foam, sequence
+       from readings where sensor_id = $sensorId and measured_at >= $from and measured_at < coalesce($to::timestamptz, 'infinity') and ($after::timestamptz is null or measured_at > $after::timestamptz)
+       order by measured_at limit $limit`,
+      { bind: { sensorId, from, to, after, limit: pageSize }, type: QueryTypes.SELECT },
+    );
+    if (rows.length > 0) yield rows;
+    if (rows.length < pageSize) return;
+    after = rows.at(-1)!.measuredAt;
+  }
+}
+
+/** Writes readings of an imported float in one statement; doubled times fall away. Returns how many were new. */
+export async function insertImported(sensorId: number, rows: readonly ArchiveReading[], transaction: Transaction): Promise<number> {
+  const [result] = await database().query<{ n: number }>(
+    `with stored as (
+       insert into readings (sensor_id, measured_at, received_at, gravity, gravity_sent, inclination, temperature, battery, signal, foam, sequence)
+       select $sensorId, r."measuredAt", r."receivedAt", r.gravity, r."gravitySent", r.inclination, r.temperature, r.battery, r.signal, r.foam, r.sequence
+       from jsonb_to_recordset($rows::jsonb) as r ("measuredAt" timestamptz, "receivedAt" timestamptz, gravity float8, "gravitySent" float8, inclination real, temperature real, battery real, signal real, foam real, sequence bigint)
+       on conflict do nothing returning 1
+     ) select count(*)::int as n from stored`,
+    { bind: { sensorId, rows: JSON.stringify(rows) }, type: QueryTypes.SELECT, transaction },
+  );
+  return result?.n ?? 0;
+}
+
+/** Takes an import's readings away. */
+export async function deleteImported(sensorId: number, transaction: Transaction): Promise<void> {
+  await database().query('delete from readings where sensor_id = $sensorId', { bind: { sensorId }, transaction });
+}

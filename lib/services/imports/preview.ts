@@ -1,0 +1,63 @@
+import { Cellar } from '@/db/models';
+import { authorize } from '@/lib/auth/authorize';
+import type { Actor } from '@/lib/auth/policies';
+import { systemClock, type Clock } from '@/lib/clock';
+import type { ImportPreviewBody, ImportPreviewForm } from '@/lib/contracts/imports';
+import type { ImportedBatch } from '@/lib/core/importing/batches';
+import type { ImportedReading } from '@/lib/core/importing/readings';
+import { iso } from '../iso';
+import { readArchive, readBatches, readReadings } from './read';
+
+const ROWS_SHOWN = 8;
+const ERRORS_SHOWN = 100;
+
+const day = (at: number | null) => (at === null ? '–' : iso(at).slice(0, 10));
+
+const readingWords = (reading: ImportedReading) => `${iso(reading.at).slice(0, 16).replace('T', ' ')} UTC, ${reading.gravity.toFixed(3)}${reading.temperature === null ? '' : `, ${reading.temperature.toFixed(1)} °C`}`;
+const batchWords = (batch: ImportedBatch) => `${batch.name}, ${batch.kind}, ${day(batch.pitchedAt)} to ${day(batch.endedAt)}, ${batch.originalGravity?.toFixed(3) ?? '–'} to ${batch.finalGravity?.toFixed(3) ?? '–'}, ${batch.volumeL} L`;
+
+/** Looks at a file: what it would bring, and what is wrong with it, line by line. Nothing is kept. */
+export async function previewImport(actor: Actor, form: ImportPreviewForm, clock: Clock = systemClock): Promise<ImportPreviewBody> {
+  authorize(actor, 'data.import');
+  const { timeZone } = await Cellar.findByPk(actor.cellarId, { rejectOnEmpty: true });
+  if (form.kind === 'archive') {
+    const { batches } = readArchive(form);
+    const times = batches.flatMap((batch) => (batch.pitched_at ? [Date.parse(batch.pitched_at)] : []));
+    return {
+      kind: 'archive',
+      header: [],
+      rows: [],
+      columns: {},
+      gravity_unit: null,
+      temperature_unit: null,
+      time_zone: timeZone,
+      date_order: 'day',
+      read: batches.slice(0, ROWS_SHOWN).map((batch, index) => ({ line: index + 1, says: `${batch.name}, ${batch.entries.length} lines of log, ${batch.floats.reduce((sum, float) => sum + float.readings.length, 0)} readings` })),
+      good: batches.length,
+      bad: 0,
+      errors: [],
+      from: times.length ? iso(Math.min(...times)) : null,
+      to: times.length ? iso(Math.max(...times)) : null,
+    };
+  }
+  const file = form.kind === 'readings' ? readReadings(form, timeZone, clock.now()) : readBatches(form, timeZone, clock.now());
+  const { table, good, errors } = file;
+  const times = form.kind === 'readings' ? good.map(({ value }) => (value as ImportedReading).at) : good.flatMap(({ value }) => (value as ImportedBatch).pitchedAt ?? []);
+  const span = times.reduce<{ low: number; high: number } | null>((held, at) => ({ low: Math.min(held?.low ?? at, at), high: Math.max(held?.high ?? at, at) }), null);
+  return {
+    kind: form.kind,
+    header: table.header.map((name) => name.slice(0, 80)),
+    rows: table.rows.slice(0, ROWS_SHOWN).map((row) => row.cells.map((cell) => cell.slice(0, 80))),
+    columns: file.options.columns,
+    gravity_unit: 'gravityUnit' in file.options ? file.options.gravityUnit : null,
+    temperature_unit: 'temperatureUnit' in file.options ? file.options.temperatureUnit : null,
+    time_zone: file.options.timeZone,
+    date_order: file.options.dateOrder,
+    read: good.slice(0, ROWS_SHOWN).map(({ line, value }) => ({ line, says: form.kind === 'readings' ? readingWords(value as ImportedReading) : batchWords(value as ImportedBatch) })),
+    good: good.length,
+    bad: errors.length,
+    errors: errors.slice(0, ERRORS_SHOWN),
+    from: span && iso(span.low),
+    to: span && iso(span.high),
+  };
+}
