@@ -7,7 +7,7 @@ import { call, evidence, fallingWords, gravityWords, pointsWords, rateWords } fr
 /** Points that may still fall, nine times in ten; null without a level. */
 function mostToCome(scene: Scene): number | null {
   const left = scene.level === null ? null : scene.watch.remainingNow();
-  return left && Math.max(0, left.value + 1.28 * left.sd);
+  return left && Math.max(0, left.most);
 }
 
 /** Volumes of CO2 that could still come in the bottle, nine times in ten. */

@@ -133,12 +133,31 @@ export class Track {
   }
 
   /**
-   * What is still to fall after `to`, from the record since `from`, of a stretch that
-   * is `ageH` old; null when less than three quarters of it has data.
+   * What is still to fall after `to`, from the last `hours` of sound record before it and
+   * none of before `notBefore`, of a stretch that is `ageH` old. A gap is bridged: what lies
+   * on both sides of it tells more of an end than either. Null when most of the wanted
+   * hours are missing.
    */
-  tail(from: number, to: number, ageH: number): Tail | null {
-    const kept = this.gather(from, to, 0.75);
+  tail(hours: number, notBefore: number, to: number, ageH: number): Tail | null {
+    const from = Math.max(notBefore, this.reachOf(hours, to));
+    if (to - from < 66) return null;
+    const kept = this.gather(from, to, Math.min(0.75, (0.75 * hours) / (to - from)));
     return kept < 10 ? null : fitTail(lineT, lineG, 0, kept > 60 ? thirds(kept) : kept, to, ageH / 24);
+  }
+
+  /** The hour since which there are so many hours of sound record before `to`; at most two and a half times as far back. */
+  private reachOf(hours: number, to: number): number {
+    const { bins } = this;
+    const reach = Math.max(1.01, 1.6 * this.spacing);
+    let covered = 0;
+    let next = to;
+    for (let i = this.upTo(to) - 1; i >= 0 && covered < hours; i -= 1) {
+      if (bins.t[i]! < to - 2.5 * hours) return next;
+      if (bins.masked[i]) continue;
+      covered += Math.min(next - bins.t[i]!, reach);
+      next = bins.t[i]!;
+    }
+    return Math.min(next, to - hours);
   }
 
   /** Copies the sound bins of [from, to) side by side; their number, or 0 when they cover too little. */

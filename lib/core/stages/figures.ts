@@ -12,6 +12,20 @@ import { latch } from './latch';
 /** Hours between two views of the tail, which hardly changes from look to look. */
 const TAIL_H = 6;
 
+interface TailCache {
+  at: number;
+  tail: Tail | null;
+}
+
+/** Points still to fall, how well that is known, and the most it may be nine times in ten. */
+export interface Remaining {
+  value: number;
+  sd: number;
+  most: number;
+}
+
+const remaining = (value: number, sd: number): Remaining => ({ value, sd, most: value + 1.28 * sd });
+
 /** A float whose readings have all but stopped flickering. */
 export interface FrozenState {
   since: number;
@@ -71,9 +85,10 @@ export class Figures {
 
   private readonly lines = new Map<number, Line | null>();
   private levelMemo: number | null | undefined;
-  private remainingMemo: { value: number; sd: number } | null | undefined;
+  private remainingMemo: Remaining | null | undefined;
   private fitCache: { key: number; fit: CurveFit | null } | null = null;
-  private tailCache: { at: number; tail: Tail | null } | null = null;
+  private tailCache: TailCache | null = null;
+  private longTailCache: TailCache | null = null;
   private priorCache: { segment: Segment; prior: Normal } | null = null;
 
   constructor(
@@ -127,6 +142,7 @@ export class Figures {
   protected recordChanged(): void {
     this.fitCache = null;
     this.tailCache = null;
+    this.longTailCache = null;
     this.forget();
   }
 
@@ -155,7 +171,7 @@ export class Figures {
   /** Highest gravity at which the batch may be done, points. */
   zoneTop(): number {
     const prior = this.fgPrior();
-    return prior.mean + Math.max(1.6 * Math.hypot(prior.sd, this.track.calibrationSd(prior.mean)), 3);
+    return prior.mean + Math.max(1.9 * Math.hypot(prior.sd, this.track.calibrationSd(prior.mean)), 3);
   }
 
   /** Lowest gravity at which a batch that rests may be called stuck, points; between the two it is not known. */
@@ -176,17 +192,24 @@ export class Figures {
     return fit;
   }
 
-  /** What is still to come by the end of the record alone: a quarter of the age, at least 3 and at most 10 days of it. */
+  /** What is still to come by the end of the record alone: three tenths of the age, at least 4 and at most 12 days of it. */
   tail(): Tail | null {
-    const now = Math.floor(this.lookedAt / TAIL_H + 1e-9) * TAIL_H;
-    if (this.tailCache?.at !== now) {
-      const { from, restarted } = this.segment;
-      const age = restarted ? Math.max(72, now - from) : now;
-      const window = Math.max(72, Math.min(240, 0.25 * age));
-      const since = Math.max(now - window, restarted ? from + 24 : 0);
-      this.tailCache = { at: now, tail: now - since < 66 ? null : this.track.tail(since, now, age) };
-    }
+    this.tailCache = this.tailOver(0.3, 288, this.tailCache);
     return this.tailCache.tail;
+  }
+
+  /** The same from a longer end, 0.35 of the age and at most 14 days: slower to see an end, and seldom deceived by one. */
+  protected longTail(): Tail | null {
+    this.longTailCache = this.tailOver(0.35, 336, this.longTailCache);
+    return this.longTailCache.tail;
+  }
+
+  private tailOver(share: number, mostH: number, cache: TailCache | null): TailCache {
+    const now = Math.floor(this.lookedAt / TAIL_H + 1e-9) * TAIL_H;
+    if (cache?.at === now) return cache;
+    const { from, restarted } = this.segment;
+    const age = restarted ? Math.max(72, now - from) : now;
+    return { at: now, tail: this.track.tail(Math.max(96, Math.min(mostH, share * age)), restarted ? from + 24 : 0, now, age) };
   }
 
   /** The tail where the fall is near its end; null before. */
@@ -202,24 +225,28 @@ export class Figures {
    * shows, held against what the yeast's range leaves to be had; before that the
    * curve. The range counts little where the tail is clear.
    */
-  remainingNow(): { value: number; sd: number } | null {
+  remainingNow(): Remaining | null {
     if (this.remainingMemo === undefined) this.remainingMemo = this.weighRemaining();
     return this.remainingMemo;
   }
 
-  private weighRemaining(): { value: number; sd: number } | null {
+  private weighRemaining(): Remaining | null {
     const level = this.levelNow();
     if (level === null) return null;
     const tail = this.tailNow();
-    if (!tail) {
-      const fit = this.fit();
-      return fit && { value: level - fit.parameters[1]!, sd: Math.hypot(fit.fgSd, 0.6) };
-    }
+    if (tail) return this.againstRange(level, tail);
+    const fit = this.fit();
+    return fit && remaining(level - fit.parameters[1]!, Math.hypot(fit.fgSd, 0.6));
+  }
+
+  /** A tail held against what the yeast's range leaves to be had. */
+  protected againstRange(level: number, tail: Tail): Remaining {
     const prior = this.fgPrior();
-    return held(
+    const both = held(
       { value: tail.remaining, sd: Math.hypot(tail.sd, 0.2) },
       { value: level - prior.mean, sd: Math.hypot(prior.sd, this.track.calibrationSd(level)) },
     );
+    return remaining(both.value, both.sd);
   }
 
   /** Expected final gravity, points. */

@@ -6,11 +6,10 @@ import { hold } from './latch';
 
 export { LOOK_H } from './intake';
 
-/** Points that may still come, nine times in ten, when a batch is called finished, and when it may be bottled. */
+/** Points that may still come, nine times in ten, when a batch may be racked, when it is called finished, and when it may be bottled. */
+export const RACK_POINTS = 3.4;
 export const TERMINAL_POINTS = 1.7;
 export const BOTTLE_POINTS = 1.0;
-/** Points that are likely still to come when it may be racked. */
-export const RACK_POINTS = 1.8;
 /** Hours after the pitch at which a start is overdue. */
 export const OVERDUE_H: Record<BatchSetup['kind'], number> = { beer: 48, cider: 72, mead: 72, wine: 72 };
 
@@ -124,7 +123,8 @@ export class Watch extends Intake {
   private judgeEnd(hour: number): void {
     const level = this.levelNow();
     const line24 = this.line(24);
-    const line48 = this.line(48);
+    // After a float that stuck there may be no two days of record yet.
+    const line48 = this.line(48) ?? line24;
     const lower48 = line48 ? -line48.slope - 1.64 * line48.se : null;
     const upper48 = line48 ? -line48.slope + 1.28 * line48.se : null;
     const ground = this.groundLevel();
@@ -133,7 +133,7 @@ export class Watch extends Intake {
     const ceiling = !this.terminal.on ? 0.9 : !this.bottle.on ? 0.5 : 0;
     const slow = inside && upper48 !== null && upper48 < ceiling;
     const left = slow && this.tail() ? this.remainingNow() : null;
-    const most = left && left.value + 1.28 * left.sd;
+    const most = left && left.most;
 
     const done = most !== null && most < TERMINAL_POINTS && upper48! < 0.9 && this.quietSinceAddition(60, 120);
     const wasDone = this.terminal.on;
@@ -142,19 +142,19 @@ export class Watch extends Intake {
 
     let rackable = this.terminal.on;
     if (!rackable && inside && this.quietSinceAddition(60, 120) && line24 && -line24.slope < 2.5) {
-      const end = this.tail();
-      const likely = end ? end.likely : this.remainingNow()?.value ?? null;
-      rackable = likely !== null && likely < RACK_POINTS;
+      const left = this.remainingNow();
+      rackable = left !== null && left.most < RACK_POINTS;
     }
     hold(this.rack, hour, rackable, 2, line24 !== null && -line24.slope - 1.64 * line24.se > 3);
 
+    const rest = most !== null && upper48! < 0.5 ? this.longTail() : null;
     const still =
-      most !== null &&
-      most < BOTTLE_POINTS &&
-      upper48! < 0.5 &&
+      rest !== null &&
+      level !== null &&
+      this.againstRange(level, rest).most < BOTTLE_POINTS &&
       !this.rising.on &&
       !this.refermenting.on &&
-      this.quietSinceAddition(120, 240);
+      this.quietSinceAddition(120, 168);
     hold(this.bottle, hour, still, 4, (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on);
   }
 
