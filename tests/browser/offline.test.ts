@@ -1,0 +1,274 @@
+import { randomUUID } from 'node:crypto';
+import type { BrowserContext, Page } from 'playwright-core';
+import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest';
+import { Batch, Entry, Membership, SignIn } from '@/db/models';
+import { expectAccessible, expectNoSidewaysScroll, useBrowser, type Visit } from '../support/browser';
+import { useDatabase } from '../support/database';
+import { buildBatch, buildCellar, buildMember } from '../support/factories';
+import { until } from '../support/processes';
+import { sessionCookie, startWeb, type Web } from '../support/web';
+
+const db = useDatabase();
+const browser = useBrowser();
+let web: Web;
+let cellarId: string;
+let batch: Batch;
+let wren: Awaited<ReturnType<typeof buildMember>>;
+let visits: Visit[] = [];
+
+beforeAll(async () => {
+  web = await startWeb({ databaseUrl: db.url });
+  cellarId = (await buildCellar({ name: 'Stone loft' })).id;
+  wren = await buildMember('brewer', { cellarId, name: 'Wren Holt' });
+  batch = await buildBatch({ cellarId, name: 'Oat perry', pitchedAt: new Date(Date.now() - 3 * 86_400_000) });
+}, 700_000);
+afterAll(() => web?.stop());
+afterEach(async () => {
+  await Promise.all(visits.map(({ context }) => context.close()));
+  visits = [];
+  await Entry.destroy({ where: {} });
+});
+
+async function visit(personId = wren.personId): Promise<Visit> {
+  const made = await browser.visitAs(personId, web.url);
+  visits.push(made);
+  return made;
+}
+
+const names = (page: Page) => page.evaluate(async () => (await caches.keys()).toSorted());
+const holds = (page: Page, path: string) => page.evaluate(async (wanted) => (await Promise.all((await caches.keys()).map(async (name) => (await caches.open(name)).match(wanted)))).some(Boolean), path);
+
+/** On the shelf, with everything for the way kept. */
+async function onTheShelf({ page }: Visit): Promise<void> {
+  await page.goto(`${web.url}/shelf`);
+  await page.getByRole('link', { name: batch.name }).first().waitFor();
+  await page.evaluate(() => navigator.serviceWorker.ready);
+  // The first visit was not the worker's yet: what it showed is asked for once more.
+  await page.reload();
+  await page.getByRole('link', { name: batch.name }).first().waitFor();
+  await until('the kept shelf', () => holds(page, '/shelf'), 30_000);
+  await until('the kept batch', async () => (await holds(page, `/batches/${batch.id}`)) && holds(page, `/api/v1/batches/${batch.id}/entries?limit=200`), 60_000);
+}
+
+async function onTheBatch(page: Page): Promise<void> {
+  await page.goto(`${web.url}/batches/${batch.id}`);
+  await page.getByRole('heading', { level: 1, name: batch.name }).filter({ visible: true }).first().waitFor();
+}
+
+async function write(page: Page, text: string): Promise<void> {
+  await page.getByRole('button', { name: 'Write in the log' }).first().click();
+  const form = page.getByRole('dialog');
+  await form.getByLabel('What happened').selectOption('note');
+  await form.getByRole('textbox', { name: /note/i }).first().fill(text);
+  await form.locator('button[type=submit]').click();
+  await form.waitFor({ state: 'hidden' });
+}
+
+const waiting = (page: Page) => page.getByRole('list', { name: 'Waiting to be sent' }).getByRole('listitem');
+const logged = async () => (await Entry.findAll({ order: [['createdAt', 'ASC'], ['id', 'ASC']] })).map((entry) => entry.text);
+const online = async (context: BrowserContext) => context.setOffline(false);
+
+describe('without a network', () => {
+  it('opens the shelf as it was last seen, with its age, and a batch from it', async () => {
+    const made = await visit();
+    const { page, context } = made;
+    await onTheShelf(made);
+    await context.setOffline(true);
+    await page.reload();
+    await page.getByRole('link', { name: batch.name }).first().waitFor();
+    await page.getByText(/Shown as of \d\d:\d\d/).waitFor();
+    await expectNoSidewaysScroll(page);
+    await expectAccessible(page);
+    await onTheBatch(page);
+    await page.getByText(/Shown as of \d\d:\d\d/).waitFor();
+    await online(context);
+    await page.getByText(/Shown as of/).waitFor({ state: 'hidden', timeout: 60_000 });
+  });
+
+  it('says so in a sentence where a page was never kept', async () => {
+    const made = await visit();
+    const { page, context } = made;
+    await onTheShelf(made);
+    await context.setOffline(true);
+    await page.goto(`${web.url}/musts/new`);
+    await page.getByText('this page was not kept on this device').waitFor();
+    await page.getByRole('link', { name: 'To the shelf' }).click();
+    await page.getByRole('link', { name: batch.name }).first().waitFor();
+  });
+
+  it('keeps two entries through a reload and sends each once, in order, when the network is back', async () => {
+    const made = await visit();
+    const { page, context } = made;
+    await onTheShelf(made);
+    await onTheBatch(page);
+    await context.setOffline(true);
+    await write(page, 'First: foam has fallen.');
+    await write(page, 'Second: water topped up.');
+    await page.getByText('2 notes wait to be sent.').waitFor();
+    await page.reload();
+    await page.getByText('Second: water topped up.').waitFor();
+    expect(await waiting(page).count()).toBe(2);
+    expect(await logged()).toEqual([]);
+    await online(context);
+    await until('both entries', async () => (await logged()).length === 2, 60_000);
+    await waiting(page).first().waitFor({ state: 'hidden' });
+    await page.getByText('First: foam has fallen.').waitFor();
+    expect(await logged()).toEqual(['First: foam has fallen.', 'Second: water topped up.']);
+  });
+});
+
+describe('an entry whose answer was lost', () => {
+  it('is kept once, though it was sent twice', async () => {
+    const made = await visit();
+    const { page } = made;
+    await onTheBatch(page);
+    let sent = 0;
+    await page.route(`**/api/v1/batches/${batch.id}/entries`, async (route) => {
+      if (route.request().method() !== 'POST') return route.continue();
+      sent += 1;
+      if (sent > 1) return route.continue();
+      // The server has it; its answer never arrives.
+      await route.fetch();
+      return route.abort('connectionreset');
+    });
+    await write(page, 'Smells of pears.');
+    await until('the second sending', () => sent >= 2, 60_000);
+    await waiting(page).first().waitFor({ state: 'hidden' });
+    expect(await logged()).toEqual(['Smells of pears.']);
+  });
+});
+
+describe('two tabs with entries that wait', () => {
+  it('send each once', async () => {
+    const made = await visit();
+    const { page, context } = made;
+    await onTheShelf(made);
+    await onTheBatch(page);
+    const other = await context.newPage();
+    await onTheBatch(other);
+    await context.setOffline(true);
+    for (let index = 1; index <= 4; index += 1) await write(index % 2 ? page : other, `Note ${index}.`);
+    await until('all four in both tabs', async () => (await waiting(page).count()) === 4 && (await waiting(other).count()) === 4);
+    await online(context);
+    await until('all four entries', async () => (await logged()).length >= 4, 60_000);
+    await waiting(other).first().waitFor({ state: 'hidden' });
+    expect(await logged()).toEqual(['Note 1.', 'Note 2.', 'Note 3.', 'Note 4.']);
+  });
+});
+
+describe('an entry that the server refuses later', () => {
+  it('says why, is not lost, and can be sent again or thrown away', async () => {
+    const made = await visit();
+    const { page, context } = made;
+    await onTheShelf(made);
+    await onTheBatch(page);
+    await context.setOffline(true);
+    await write(page, 'Tastes dry.');
+    await write(page, 'Never mind.');
+    const membership = await Membership.findOne({ where: { personId: wren.personId, cellarId }, rejectOnEmpty: true });
+    await membership.update({ role: 'guest' });
+    await online(context);
+    await page.getByText(/Not taken: .*guest/).first().waitFor({ timeout: 60_000 });
+    await page.getByText('2 notes were not taken.').waitFor();
+    await membership.update({ role: 'brewer' });
+    await waiting(page).filter({ hasText: 'Tastes dry.' }).getByRole('button', { name: 'Send it again' }).click();
+    await until('the entry', async () => (await logged()).length === 1, 30_000);
+    await waiting(page).filter({ hasText: 'Never mind.' }).getByRole('button', { name: 'Discard' }).click();
+    await page.getByRole('button', { name: 'Throw it away' }).click();
+    await waiting(page).first().waitFor({ state: 'hidden' });
+    expect(await logged()).toEqual(['Tastes dry.']);
+  });
+});
+
+describe('a sign-in that has ended', () => {
+  it('loses nothing that was written, and gives it to nobody else who signs in', async () => {
+    const made = await visit();
+    const { page, context } = made;
+    await onTheBatch(page);
+    await SignIn.update({ endedAt: new Date() }, { where: { personId: wren.personId } });
+    await write(page, 'Written after the sign-in had ended.');
+    await page.getByText('Sign in again and they are sent.').waitFor();
+    expect(await logged()).toEqual([]);
+
+    const other = await buildMember('brewer', { cellarId, name: 'Ines' });
+    const signInAs = async (personId: string) => {
+      const [name, value] = (await sessionCookie(personId)).cookie.split('=') as [string, string];
+      await context.addCookies([{ name, value, url: web.url }]);
+    };
+    await signInAs(other.personId);
+    await onTheBatch(page);
+    await page.waitForTimeout(1_500);
+    expect(await waiting(page).count()).toBe(0);
+    expect(await logged()).toEqual([]);
+
+    await signInAs(wren.personId);
+    await onTheBatch(page);
+    await until('the entry', async () => (await logged()).length === 1, 60_000);
+    expect(await Entry.findOne({ rejectOnEmpty: true })).toMatchObject({ personId: wren.personId, text: 'Written after the sign-in had ended.' });
+  });
+
+  it('leaves nothing of the person on the device', async () => {
+    const made = await visit();
+    const { page, context } = made;
+    await onTheShelf(made);
+    expect((await names(page)).some((name) => name.startsWith('data '))).toBe(true);
+    await page.getByRole('button', { name: 'Wren H.' }).click();
+    await page.getByRole('button', { name: 'Sign out' }).click();
+    await page.waitForURL(/sign-in/);
+    await until('nothing kept', async () => (await names(page)).every((name) => name.startsWith('parts-')));
+    await context.setOffline(true);
+    await page.goto(`${web.url}/shelf`);
+    await page.getByText('this page was not kept on this device').waitFor();
+  });
+
+  it('shows nobody what another person last saw on the same browser', async () => {
+    const made = await visit();
+    const { page, context } = made;
+    await onTheShelf(made);
+    const stranger = await buildMember('keeper', { name: 'Otto' });
+    const theirs = await buildBatch({ cellarId: stranger.cellarId, name: 'Sloe mead' });
+    const [name, value] = (await sessionCookie(stranger.personId)).cookie.split('=') as [string, string];
+    await context.addCookies([{ name, value, url: web.url }]);
+    await page.goto(`${web.url}/shelf`);
+    await page.getByRole('link', { name: theirs.name }).first().waitFor();
+    await until('their answers alone', async () => (await names(page)).filter((item) => item.startsWith('data ')).join() === `data ${stranger.personId}.${stranger.cellarId}`);
+    await context.setOffline(true);
+    await page.reload();
+    await page.getByRole('link', { name: theirs.name }).first().waitFor();
+    expect(await page.getByText(batch.name).count()).toBe(0);
+  });
+});
+
+describe('the installed app', () => {
+  it('has a manifest whose icons are there in the sizes it names', async () => {
+    const manifest = (await (await fetch(`${web.url}/manifest.webmanifest`)).json()) as { start_url: string; display: string; icons: Array<{ src: string; sizes: string; type: string; purpose?: string }> };
+    expect(manifest).toMatchObject({ start_url: '/shelf', display: 'standalone' });
+    expect(manifest.icons.some(({ purpose }) => purpose === 'maskable')).toBe(true);
+    for (const icon of manifest.icons.filter(({ type }) => type === 'image/png')) {
+      const answer = await fetch(web.url + icon.src);
+      expect(answer.status).toBe(200);
+      const { default: sharp } = await import('sharp');
+      const { width, height } = await sharp(Buffer.from(await answer.arrayBuffer())).metadata();
+      expect(`${width}x${height}`, icon.src).toBe(icon.sizes);
+    }
+  });
+
+  it('shows a push message, and its button takes the alert in hand', async () => {
+    const made = await visit();
+    const { page, context } = made;
+    await context.grantPermissions(['notifications'], { origin: web.url });
+    await onTheShelf(made);
+    const session = await context.newCDPSession(page);
+    const registered = new Promise<string>((resolve) => session.on('ServiceWorker.workerRegistrationUpdated', ({ registrations }) => registrations[0] && resolve(registrations[0].registrationId)));
+    await session.send('ServiceWorker.enable');
+    const notice = { title: 'Check: Oat perry', body: 'Stopped at 1.041.', url: '/alerts', tag: `alert-${randomUUID()}`, alert: randomUUID(), urgent: false };
+    await session.send('ServiceWorker.deliverPushMessage', { origin: web.url, registrationId: await registered, data: JSON.stringify(notice) });
+    const shown = await until('the notice', () =>
+      page.evaluate(async () => {
+        const [first] = (await (await navigator.serviceWorker.ready).getNotifications()) as Array<Notification & { actions: { title: string }[] }>;
+        return first && { title: first.title, body: first.body, tag: first.tag, actions: first.actions.map(({ title }) => title), data: first.data as unknown };
+      }),
+    );
+    expect(shown).toEqual({ title: notice.title, body: notice.body, tag: notice.tag, actions: ['I have it'], data: { url: '/alerts', alert: notice.alert } });
+  });
+});
