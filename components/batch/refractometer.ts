@@ -19,5 +19,5 @@ export function refractometerWords(draft: { brix: string; temperature: string },
   if (originalGravity === null) return 'Alcohol changes what it shows: tell the original gravity first, or use a hydrometer.';
   const gravity = gravityByRefractometer(originalGravity, brix);
   if (gravity === null) return `That is more than the must had at the start, ${gravityText(originalGravity)}.`;
-  return `${gravityText(gravity)} ± 0.004 with the alcohol reckoned in, from ${gravityText(originalGravity)}; read as a must it would be ${gravityText(sgOfBrix(brix))}. Not to bottle by.`;
+  return `${gravityText(gravity)} ± 0.004 with the alcohol reckoned in, from ${gravityText(originalGravity)}; read as a must it would be ${gravityText(sgOfBrix(brix))}. Not to bottle by: what alcohol adds to the reading is recalled, not checked against a source.`;
 }

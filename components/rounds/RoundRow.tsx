@@ -83,8 +83,8 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
   }
 
   return (
-    <li className={`border-b px-(--margin) py-2 ${row.late && !done ? 'bg-lit' : ''}`}>
-      <div className="flex items-start gap-3">
+    <li className={`border-b px-(--margin) py-2 strip:flex strip:items-center strip:gap-6 ${row.late && !done ? 'bg-lit' : ''}`}>
+      <div className="flex min-w-0 items-start gap-3 strip:flex-1">
         <Box ticked={done} disabled={!mayDo} label={done ? `Take back: ${job.title}` : `Done: ${job.title}`} onTick={(on) => (on ? ticks.tick(job) : ticks.untick(job))} className="min-h-11 min-w-9 pt-3" />
         <div className="min-w-0 flex-1 py-1">
           <p className="type-label text-ink2">
@@ -112,13 +112,13 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
         {job.batch && <span className="max-strip:hidden"><JobVessel batch={job.batch} /></span>}
       </div>
       {done ? (
-        <div className="not-printed flex items-center justify-end gap-3">
+        <div className="not-printed flex shrink-0 items-center justify-end gap-3">
           <span role="status" className="type-label text-ink2">Done and logged.</span>
           <Button onClick={() => ticks.untick(job)}>Take it back</Button>
         </div>
       ) : (
         mayDo && (
-          <div className="not-printed flex flex-wrap items-center justify-end gap-2">
+          <div className="not-printed flex flex-wrap items-center justify-end gap-2 strip:max-w-[55%] strip:shrink-0">
             {later &&
               laterTimes(now, timeZone).map((time) => (
                 <Button key={time.name} look="quiet" disabled={busy} onClick={() => void send(() => snoozeJob(job.id, new Date(time.at * 1000).toISOString()))}>

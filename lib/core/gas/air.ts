@@ -9,8 +9,8 @@ export const CO2_LIMIT_PPM = 5000;
 const FRESH_PPM = 420;
 /** A small room, 3 by 3 by 2.2 m. Our own choice: nobody has told theirs. */
 export const SMALL_ROOM_M3 = 20;
-/** Below this nobody need be told, L/h: a closed small room stays under the limit for more than two days. Our own rule. */
-const WORTH_SAYING_L_PER_H = 1.5;
+/** Nobody need be told of what a closed room takes longer than a day to gather. Our own rule. */
+const WORTH_SAYING_H = 24;
 
 const LIMITS = published('HSE EH40/2005 and 29 CFR 1910.1000 Table Z-1: 5000 ppm of CO2 over eight hours, 15 000 ppm over fifteen minutes (EH40)');
 
@@ -24,9 +24,10 @@ export interface AirNote {
 
 /** Rise of CO2 in a closed room that no air comes into, and how soon it is at the limit for a working day; null where there is too little to say. */
 export function airNote(gasLPerH: number, vessels: number, roomM3 = SMALL_ROOM_M3): AirNote | null {
-  if (!(gasLPerH >= WORTH_SAYING_L_PER_H) || !(roomM3 > 0)) return null;
+  if (!(gasLPerH > 0) || !(roomM3 > 0)) return null;
   const rise = (1000 * gasLPerH) / roomM3;
   const hours = roundDown((CO2_LIMIT_PPM - FRESH_PPM) / rise, 1);
+  if (hours > WORTH_SAYING_H) return null;
   return {
     hours,
     rise: figure(

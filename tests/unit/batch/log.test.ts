@@ -27,7 +27,7 @@ describe('what is looked at and measured', () => {
   it('says what a refractometer’s figure comes to, with the alcohol reckoned in', () => {
     const must = { pitched: true, originalGravity: 1.05 };
     // A drink fallen from 1.050 to 1.010 shows about 6.3 °Bx; read as a must that would be 1.025.
-    expect(refractometerWords({ brix: '6.3', temperature: '' }, must)).toMatch(/^1\.0(09|10|11) ± 0\.004 .* it would be 1\.025\. Not to bottle by\.$/);
+    expect(refractometerWords({ brix: '6.3', temperature: '' }, must)).toMatch(/^1\.0(09|10|11) ± 0\.004 .* it would be 1\.025\. Not to bottle by: .* recalled, not checked/);
     expect(refractometerWords({ brix: '6.3', temperature: '' }, { pitched: true, originalGravity: null })).toContain('tell the original gravity first');
     expect(refractometerWords({ brix: '12', temperature: '' }, { pitched: false, originalGravity: null })).toBe('1.048: no alcohol in it yet.');
     expect(refractometerWords({ brix: '20', temperature: '' }, must)).toContain('more than the must had');

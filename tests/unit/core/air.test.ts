@@ -13,11 +13,13 @@ describe('the air of the room', () => {
   it('rises with the gas and falls with the room, and is rounded to the safe side', () => {
     expect(airNote(7, 2)!.hours).toBeLessThan(airNote(6, 2)!.hours);
     expect(airNote(6.01, 2)!.rise.value).toBe(310);
-    expect(airNote(6, 2, 40)!.hours).toBeGreaterThan(airNote(6, 2, 20)!.hours);
+    expect(airNote(8, 2, 40)!.hours).toBeGreaterThan(airNote(8, 2, 20)!.hours);
   });
 
-  it('says nothing where next to nothing is given off', () => {
-    expect(airNote(0.2, 1)).toBeNull();
+  it('says nothing where a closed room takes longer than a day', () => {
+    expect(airNote(3.6, 3)).toBeNull();
+    expect(airNote(4, 3)).not.toBeNull();
+    expect(airNote(0, 0)).toBeNull();
     expect(airNote(Number.NaN, 1)).toBeNull();
   });
 });
