@@ -20,13 +20,15 @@ interface LaneChartProps {
   name: string;
   /** Days are narrower on a phone. */
   narrow?: boolean;
+  /** A phone's strip: fewer figures. */
+  short?: boolean;
   className?: string;
 }
 
 /** One batch on the shelf's shared calendar: fall, forecast, bed, posts and temperature. */
-export function LaneChart({ picture, span, timeZone, height, name, narrow = false, className = '' }: LaneChartProps) {
+export function LaneChart({ picture, span, timeZone, height, name, narrow = false, short = false, className = '' }: LaneChartProps) {
   const data = useMemo(() => columnsOf(picture, true), [picture]);
-  const layout = useMemo(() => layOut(picture, 'lane', height), [picture, height]);
+  const layout = useMemo(() => layOut(picture, 'lane', height, short), [picture, height, short]);
   const scene = useRef<Scene | null>(null);
   const onMeasure = useCallback(
     (element: HTMLElement, width: number) => {

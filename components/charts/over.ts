@@ -1,3 +1,4 @@
+import { gravityDoubt, gravityNumber, temperatureSpan, temperatureText } from '@/components/ui/units';
 import { placePosts, keepClear, type Label } from './place';
 import { gravityNow, hasStopped, knownUntil, valueAt, type Bracket, type Picture } from './picture';
 import { clock, when } from './zone';
@@ -37,6 +38,9 @@ function ringLabel(view: View, ring: { x: number; y: number }, width: number): {
 
 const bracketRise = (view: View, { kind }: Pick<Bracket, 'kind'>): number => (isPage(view) ? 30 : kind === 'equal' ? 24 : 10);
 
+/** A reading this near the pitch is the original gravity, which stands elsewhere. */
+const AT_PITCH_S = 12 * 3600;
+
 /** Hydrometer readings, with their figures where there is room. */
 export const rings: Mark = (view) => {
   const { context, palette, layout, picture } = view;
@@ -47,7 +51,9 @@ export const rings: Mark = (view) => {
   setText(view, palette.ink, page ? 600 : 500, page ? 1 : 0.96);
   context.textAlign = 'left';
   const width = context.measureText('1.000').width;
-  const labels = shown.map((item): Label => ({ ...ringLabel(view, item, width), width, height: 13 }));
+  const pitch = picture.posts.find((post) => post.letters === 'P')?.at;
+  const named = layout.short && pitch !== undefined ? shown.filter((item) => Math.abs(item.at - pitch) > AT_PITCH_S) : shown;
+  const labels = named.map((item): Label => ({ ...ringLabel(view, item, width), width, height: 13 }));
   const nowX = view.x(picture.now);
   const taken: Label[] = [{ x: nowX - 6, y: view.top, width: page ? 90 : 8, height: 18 }];
   if (picture.bracket) {
@@ -57,7 +63,7 @@ export const rings: Mark = (view) => {
   }
   for (const index of keepClear(labels, taken)) {
     const label = labels[index]!;
-    context.fillText(shown[index]!.gravity.toFixed(3), label.x, label.y + 7);
+    context.fillText(gravityNumber(named[index]!.gravity), label.x, label.y + 7);
   }
 };
 
@@ -148,7 +154,7 @@ export const likelyEnd: Mark = (view) => {
   context.restore();
   // Where something else is played with, its own end is what is looked at.
   if (picture.laid?.some((laid) => laid.end)) return;
-  const words = page ? `bed on ${picture.likelyEnd.words}` : `${(picture.bed?.value ?? 0).toFixed(3)} · ${picture.likelyEnd.words}`;
+  const words = page ? `bed on ${picture.likelyEnd.words}` : `${gravityNumber(picture.bed?.value ?? 0)} · ${picture.likelyEnd.words}`;
   context.textAlign = 'right';
   if (page) {
     setText(view, palette.ink, 600);
@@ -161,6 +167,11 @@ export const likelyEnd: Mark = (view) => {
     return;
   }
   if (layout.height < 46) return;
+  if (layout.short) {
+    setText(view, palette.ink, 600, 0.96);
+    underText(view, picture.likelyEnd.words, right - 6, view.top + 9);
+    return;
+  }
   const beyond = from > right - 4;
   setText(view, beyond ? palette.ink2 : palette.ink, 500, 0.96);
   context.fillText(beyond ? `to ${words} ›` : words, Math.min(Math.max(to, view.x(picture.now) + 190), right - 4), view.bottom - (layout.height < 70 ? 8 : 13));
@@ -170,7 +181,7 @@ export const bedWords: Mark = (view) => {
   const { context, palette, layout, picture, right } = view;
   if (!picture.bed || layout.style === 'lane') return;
   const doubt = Math.max(0.001, (picture.bed.hi - picture.bed.lo) / 2);
-  const figures = `${picture.bed.value.toFixed(3)} ± ${doubt.toFixed(3)}`;
+  const figures = `${gravityNumber(picture.bed.value)} ${gravityDoubt(picture.bed.value, doubt)}`;
   setText(view, palette.ink, layout.style === 'phone' ? 600 : 500);
   context.textAlign = 'right';
   underText(view, layout.style === 'phone' ? `bed ${figures}` : `bed: where it should stop, ${figures}`, right - 6, view.y(layout.gravity, picture.bed.value) + (layout.style === 'phone' ? 12 : 10));
@@ -259,11 +270,11 @@ function dot(view: View): void {
 export function temperatureWords(picture: Pick<Picture, 'readings' | 'range'>, long: boolean): string | null {
   const value = picture.readings.temperature.findLast((item) => item !== null);
   if (value === null || value === undefined) return null;
-  const figure = `${value.toFixed(1).replace('-', '−')} °C`;
+  const figure = temperatureText(value);
   const under = picture.range ? picture.range.min - value : 0;
   const over = picture.range ? value - picture.range.max : 0;
-  if (under >= 0.05) return long ? `${figure}, ${under.toFixed(1)} below range` : `${figure} low`;
-  if (over >= 0.05) return long ? `${figure}, ${over.toFixed(1)} above range` : `${figure} high`;
+  if (under >= 0.05) return long ? `${figure}, ${temperatureSpan(under).toFixed(1)} below range` : `${figure} low`;
+  if (over >= 0.05) return long ? `${figure}, ${temperatureSpan(over).toFixed(1)} above range` : `${figure} high`;
   return figure;
 }
 

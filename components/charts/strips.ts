@@ -29,6 +29,8 @@ export interface Layout {
   /** Gutters for the figures at the left and the edge at the right. */
   left: number;
   right: number;
+  /** A phone's lane: the likely end stands at the top right, away from the temperature, and the reading at the pitch goes without its figure. */
+  short: boolean;
 }
 
 /** The lowest and highest value of a strip's scale, stretched over the whole plot. */
@@ -125,10 +127,11 @@ function pageLayout(picture: Picture, style: 'page' | 'phone'): Layout {
     },
     left: phone ? 46 : 68,
     right: phone ? 0 : 14,
+    short: false,
   };
 }
 
-function laneLayout(picture: Picture, height: number): Layout {
+function laneLayout(picture: Picture, height: number, short: boolean): Layout {
   const low = height < 70;
   const bed = height - (low ? 20 : 28);
   const top = low ? 8 : 12;
@@ -143,10 +146,11 @@ function laneLayout(picture: Picture, height: number): Layout {
     ticks: { gravity: [], temperature: [], gas: [] },
     left: 0,
     right: 0,
+    short,
   };
 }
 
 /** Where everything stands; a lane takes its height, a page has its own. */
-export function layOut(picture: Picture, style: ChartStyle, laneHeight = 84): Layout {
-  return style === 'lane' ? laneLayout(picture, laneHeight) : pageLayout(picture, style);
+export function layOut(picture: Picture, style: ChartStyle, laneHeight = 84, short = false): Layout {
+  return style === 'lane' ? laneLayout(picture, laneHeight, short) : pageLayout(picture, style);
 }

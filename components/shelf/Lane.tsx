@@ -136,7 +136,7 @@ export function PhoneLane({ view, span, now, timeZone, staleAt, mayTake }: LaneP
           </div>
         </div>
       </div>
-      <LanePicture lane={lane} span={span} now={now} timeZone={timeZone} height={62} />
+      <LanePicture lane={lane} span={span} now={now} timeZone={timeZone} height={62} phone />
     </li>
   );
 }

@@ -13,10 +13,11 @@ interface LanePictureProps {
   timeZone: string;
   /** Least height, px; a lane that grows with its words takes its picture along. */
   height: number;
+  phone?: boolean;
 }
 
 /** A lane's section of the calendar. */
-export function LanePicture({ lane, span, now, timeZone, height }: LanePictureProps) {
+export function LanePicture({ lane, span, now, timeZone, height, phone = false }: LanePictureProps) {
   const cell = useRef<HTMLDivElement>(null);
   const [grown, setGrown] = useState(height);
   const picture = useMemo(() => pictureOf({ batch: lane, series: lane.series, drawn: lane, entries: lane.entries }, now, timeZone), [lane, now, timeZone]);
@@ -32,7 +33,7 @@ export function LanePicture({ lane, span, now, timeZone, height }: LanePicturePr
   return (
     <div ref={cell} className="arrives pointer-events-none relative h-full min-w-0 overflow-hidden" style={{ minHeight: height }}>
       <div className="absolute inset-x-0 top-0">
-        <LaneChart picture={picture} span={span} timeZone={timeZone} height={grown} name={lane.name} narrow />
+        <LaneChart picture={picture} span={span} timeZone={timeZone} height={grown} name={lane.name} narrow short={phone} />
       </div>
     </div>
   );
