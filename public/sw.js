@@ -22,7 +22,7 @@ const KEPT = 'x-fallbright-kept';
 /** On bad Wi-Fi what is kept is better than nothing for long, ms. */
 const PATIENCE_MS = 7_000;
 /** Pages are fetched ahead at most this often, ms. */
-const AHEAD_EVERY_MS = 10 * 60_000;
+const AHEAD_EVERY_MS = 30 * 60_000;
 const MOST_DATA = 300;
 
 /** What is worth keeping, and whether its query matters. */
@@ -223,7 +223,8 @@ worker.addEventListener('fetch', (/** @type {any} */ event) => {
 worker.addEventListener('message', (/** @type {any} */ event) => {
   const { type, paths } = event.data ?? {};
   if (type === 'forget') event.waitUntil(forget().then(() => event.ports[0]?.postMessage('forgotten')));
-  if (type === 'ahead' && Array.isArray(paths)) event.waitUntil(fetchAhead(paths.filter((path) => typeof path === 'string' && path.startsWith('/') && !NOT_KEPT.test(path)).slice(0, 60)));
+  // The development server makes each page when it is asked for: too dear to ask ahead.
+  if (type === 'ahead' && !DEVELOPMENT && Array.isArray(paths)) event.waitUntil(fetchAhead(paths.filter((path) => typeof path === 'string' && path.startsWith('/') && !NOT_KEPT.test(path)).slice(0, 60)));
 });
 
 worker.addEventListener('push', (/** @type {any} */ event) => {
