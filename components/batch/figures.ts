@@ -1,11 +1,13 @@
-/** Figures as the log writes them: three decimals for gravity, a real minus, a unit beside each. */
+import { gravityDoubt, gravityText, gravityTyped, temperatureText, volumeText } from '@/components/ui/units';
+
+/** Figures as the log writes them, in the units that the person reads: a real minus, a unit beside each. */
 
 const minus = (text: string): string => text.replace('-', '−');
 
-export const gravityText = (value: number): string => value.toFixed(3);
-export const degrees = (value: number): string => `${minus(value.toFixed(1))} °C`;
+export { gravityText };
+export const degrees = (value: number): string => temperatureText(value);
 export const percent = (value: number): string => `${value.toFixed(1)} %`;
-export const litres = (value: number): string => `${Number(value.toFixed(value < 10 ? 2 : 1))} L`;
+export const litres = (value: number): string => volumeText(value);
 export const grams = (value: number): string => (value >= 10_000 ? `${Number((value / 1000).toFixed(1))} kg` : `${Number(value.toFixed(0))} g`);
 
 export function points(value: number): string {
@@ -14,7 +16,7 @@ export function points(value: number): string {
 }
 
 /** Half the width of an interval, as `± 0.003`; never less than the last decimal shown. */
-export const doubt = (estimate: { lo: number; hi: number }): string => `± ${Math.max(0.001, (estimate.hi - estimate.lo) / 2).toFixed(3)}`;
+export const doubt = (estimate: { lo: number; hi: number }): string => gravityDoubt((estimate.lo + estimate.hi) / 2, Math.max(0.001, (estimate.hi - estimate.lo) / 2));
 
 /** A number as a person types it: `1,048`, `1.048`, ` 12 `. Null where it is empty, NaN where it is no number. */
 export function typedNumber(text: string): number | null {
@@ -23,8 +25,13 @@ export function typedNumber(text: string): number | null {
   return /^[-+]?(\d+\.?\d*|\.\d+)$/.test(trimmed) ? Number(trimmed) : NaN;
 }
 
-/** As `typedNumber`; a hydrometer is often read aloud without its point: `1048` is 1.048, `998` is 0.998. */
+/**
+ * As `typedNumber`; a hydrometer is often read aloud without its point: `1048` is
+ * 1.048, `998` is 0.998. Who reads °Bx or °P may type those too, wherever the figure cannot be an SG.
+ */
 export function typedGravity(text: string): number | null {
   const value = typedNumber(text);
-  return value !== null && Number.isInteger(value) && value >= 900 && value <= 1300 ? value / 1000 : value;
+  if (value === null || Number.isNaN(value)) return value;
+  if (Number.isInteger(value) && value >= 900 && value <= 1300) return value / 1000;
+  return gravityTyped(value);
 }

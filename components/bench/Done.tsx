@@ -2,6 +2,7 @@ import { dayName, clock } from '@/components/charts/zone';
 import { How } from '@/components/ui/How';
 import { Sentence } from '@/components/ui/Sentence';
 import { State } from '@/components/ui/StateMark';
+import { gravityText } from '@/components/ui/units';
 import type { BenchFacts } from '@/lib/contracts/bench';
 import { DONE_WORDS, EXPLAINED } from './words';
 
@@ -39,7 +40,7 @@ export function Done({ facts, timeZone }: { facts: BenchFacts; timeZone: string 
           {readings.slice(-SHOWN).toReversed().map((reading) => (
             <li key={reading.at} className="flex justify-between border-b border-rule py-0.5">
               <span className="text-ink2">{at(reading.at)}</span>
-              <span>{reading.gravity.toFixed(3)}</span>
+              <span>{gravityText(reading.gravity)}</span>
             </li>
           ))}
         </ul>

@@ -18,6 +18,7 @@ import { useNow } from '@/components/ui/now';
 import { GroupBar, PageHead } from '@/components/ui/Page';
 import { Sentence } from '@/components/ui/Sentence';
 import { State } from '@/components/ui/StateMark';
+import { gravityText } from '@/components/ui/units';
 import { ClientError } from '@/lib/client/fetcher';
 import { undoOpening, useLot } from '@/lib/client/lots';
 import { useMe } from '@/lib/client/me';
@@ -61,6 +62,9 @@ export function LotPage({ id }: { id: string }) {
         {may('lots.serve') && lot.counts.left > 0 && <Button onClick={() => setOpened('serve')}>Open, give, move</Button>}
         {may('lots.update') && <Button onClick={() => setOpened('edit')}>Write on it</Button>}
         {may('labels.print') && <LinkButton href={`/labels?lot=${lot.id}`}>Labels</LinkButton>}
+        <LinkButton look="quiet" href={`/compare?batches=${lot.batch.id}`}>
+          Compare
+        </LinkButton>
       </PageHead>
       {lot.caution && (
         <section aria-label="Caution" className="border-b border-l-[10px] border-l-madder bg-lit px-(--margin) py-3">
@@ -107,7 +111,7 @@ function factsOf(lot: LotBody, day: (at: string) => string): Fact[] {
     { name: 'ready from', says: lot.ready ? `${day(lot.ready_from)}, ready` : day(lot.ready_from), how: lot.how.ready },
     { name: 'sparkle', says: SPARKLE_WORDS[lot.sparkle] },
     { name: 'strength', says: strengthWords(lot.abv_percent), how: lot.how.strength },
-    { name: 'gravity', says: `${lot.original_gravity?.toFixed(3) ?? '?'} to ${lot.final_gravity?.toFixed(3) ?? '?'}` },
+    { name: 'gravity', says: `${lot.original_gravity === null ? '?' : gravityText(lot.original_gravity)} to ${lot.final_gravity === null ? '?' : gravityText(lot.final_gravity)}` },
     { name: 'opened, given', says: `${lot.counts.opened}, ${lot.counts.given}` },
     { name: 'cost a litre', says: costWords(lot), how: lot.how.cost },
   ];

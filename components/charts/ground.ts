@@ -1,10 +1,9 @@
+import { gravityNumber, temperatureName, temperatureNumber } from '@/components/ui/units';
 import type { Calendar } from './calendar';
 import { thin } from './palette';
 import { clipToPlot, crisp, fillHaze, line, setText, type Mark, type View } from './view';
 
 /** Marks under the curves: the calendar's rules, the scales, the bed, the wanted temperatures. */
-
-const gravityText = (value: number) => value.toFixed(3);
 
 export const calendarRules = (calendar: () => Calendar): Mark => (view) => {
   const { context, palette, top, bottom, picture } = view;
@@ -34,10 +33,10 @@ export const valueRules: Mark = (view) => {
   for (const value of layout.ticks.gravity) {
     const y = crisp(view.y(layout.gravity, value));
     line(context, [[left, y], [right, y]]);
-    figure(gravityText(value), y, palette.ink2);
+    figure(gravityNumber(value), y, palette.ink2);
   }
-  if (picture.bed) figure(gravityText(picture.bed.value), view.y(layout.gravity, picture.bed.value), palette.ink, 700);
-  if (layout.temperature) for (const value of layout.ticks.temperature) figure(String(Number(value.toFixed(1))), view.y(layout.temperature, value), palette.ink2);
+  if (picture.bed) figure(gravityNumber(picture.bed.value), view.y(layout.gravity, picture.bed.value), palette.ink, 700);
+  if (layout.temperature) for (const value of layout.ticks.temperature) figure(temperatureNumber(value).replace(/\.0$/, ''), view.y(layout.temperature, value), palette.ink2);
   if (layout.gas) {
     const decimals = layout.gas.max < 0.2 ? 2 : 1;
     for (const value of layout.ticks.gas) {
@@ -127,7 +126,7 @@ export const stripNames: Mark = (view) => {
   const x = left + (layout.style === 'phone' ? 10 : 8);
   if (layout.temperature) {
     setText(view, palette.mercury);
-    context.fillText('temperature, °C', x, top + layout.rules[0]! + 11);
+    context.fillText(`temperature, ${temperatureName()}`, x, top + layout.rules[0]! + 11);
   }
   if (layout.gas) {
     setText(view, palette.ink);

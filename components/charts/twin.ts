@@ -1,3 +1,4 @@
+import { gravityName, gravityNumber, gravityText, temperatureName, temperatureNumber, unitsRead } from '@/components/ui/units';
 import { gravityNow, hasStopped, knownUntil, valueAt, type Picture } from './picture';
 import { temperatureWords } from './over';
 import { clock, dayName } from './zone';
@@ -9,16 +10,17 @@ export interface Twin {
   rows: string[][];
 }
 
+const written = (value: number | null | undefined, as: (value: number) => string) => (typeof value === 'number' ? as(value) : '–');
 const figure = (value: number | null | undefined, digits: number) => (typeof value === 'number' ? value.toFixed(digits).replace('-', '−') : '–');
 
 function sentenceOf(picture: Picture, name: string, timeZone: string): string {
   const gravity = gravityNow(picture);
   if (gravity === null) return `${name}: no readings yet.`;
   const known = knownUntil(picture);
-  const parts = [`${name}: gravity ${gravity.toFixed(3)}`];
+  const parts = [`${name}: gravity ${gravityText(gravity)}`];
   if (picture.silentAt !== null) parts[0] += ` when last heard, ${dayName(known, timeZone)} ${clock(known, timeZone)}`;
-  if (picture.originalGravity !== null) parts.push(`fallen ${Math.round((picture.originalGravity - gravity) * 1000)} points from ${picture.originalGravity.toFixed(3)}`);
-  if (picture.bed) parts.push(`should stop at ${picture.bed.value.toFixed(3)}, 8 in 10 between ${picture.bed.lo.toFixed(3)} and ${picture.bed.hi.toFixed(3)}`);
+  if (picture.originalGravity !== null) parts.push(`fallen ${Math.round((picture.originalGravity - gravity) * 1000)} points from ${gravityText(picture.originalGravity)}`);
+  if (picture.bed) parts.push(`should stop at ${gravityText(picture.bed.value)}, 8 in 10 between ${gravityText(picture.bed.lo)} and ${gravityText(picture.bed.hi)}`);
   if (picture.likelyEnd && !hasStopped(picture)) parts.push(`likely ${picture.likelyEnd.words}`);
   if (picture.bracket) parts.push(picture.bracket.words);
   const warmth = temperatureWords(picture, true);
@@ -35,12 +37,12 @@ export function twinOf(picture: Picture, name: string, timeZone: string, rows = 
     if (index % every !== 0 && index !== at.length - 1) return [];
     const fitted = valueAt(picture.curve, time);
     const gas = picture.gas.findLast((bin) => bin.at <= time);
-    return [[label(time), figure(gravity[index], 3), fitted ? `${fitted.lo.toFixed(3)} to ${fitted.hi.toFixed(3)}` : '–', figure(temperature[index], 1), figure(gas?.value, 2)]];
+    return [[label(time), written(gravity[index], gravityNumber), fitted ? `${gravityNumber(fitted.lo)} to ${gravityNumber(fitted.hi)}` : '–', written(temperature[index], temperatureNumber), figure(gas?.value, 2)]];
   });
   const coming = picture.curve.filter((point) => point.at > picture.now);
   const step = Math.max(1, Math.ceil(coming.length / 12));
   const foreseen = coming
     .filter((_, index) => index % step === step - 1)
-    .map((point) => [`${dayName(point.at, timeZone)}, forecast`, point.gravity.toFixed(3), `${point.lo.toFixed(3)} to ${point.hi.toFixed(3)}`, '–', '–']);
-  return { sentence: sentenceOf(picture, name, timeZone), head: ['time', 'gravity', '8 in 10', '°C', 'gas, L/h'], rows: [...read, ...foreseen] };
+    .map((point) => [`${dayName(point.at, timeZone)}, forecast`, gravityNumber(point.gravity), `${gravityNumber(point.lo)} to ${gravityNumber(point.hi)}`, '–', '–']);
+  return { sentence: sentenceOf(picture, name, timeZone), head: ['time', unitsRead().gravity === 'sg' ? 'gravity' : `gravity,${gravityName()}`, '8 in 10', temperatureName(), 'gas, L/h'], rows: [...read, ...foreseen] };
 }

@@ -2,6 +2,7 @@
 
 import { useRef, useState } from 'react';
 import { useWidth } from '@/components/ui/width';
+import { gravityNumber, temperatureNumber } from '@/components/ui/units';
 import { valueAt, written, type Curve, type Measure } from './curves';
 
 const HEIGHT = 420;
@@ -71,7 +72,7 @@ export function CompareChart({ curves, measure }: { curves: readonly Curve[]; me
           <g key={value}>
             <path d={`M${LEFT} ${y(value)}H${right}`} stroke="var(--rule)" />
             <text x={LEFT - 8} y={y(value) + 4} textAnchor="end" fontSize="12" fill="var(--ink2)">
-              {measure === 'gravity' ? value.toFixed(3) : String(Number(value.toFixed(1))).replace('-', '−')}
+              {measure === 'gravity' ? gravityNumber(value) : measure === 'temperature' ? temperatureNumber(value) : String(Number(value.toFixed(1))).replace('-', '−')}
             </text>
           </g>
         ))}

@@ -3,6 +3,7 @@ import { percent } from '@/components/batch/figures';
 import { KIND_WORDS } from '@/components/batch/words';
 import { GroupBar } from '@/components/ui/Page';
 import { How } from '@/components/ui/How';
+import { gravityText } from '@/components/ui/units';
 import type { Compared } from './curves';
 
 const days = (hours: number): string => `${(hours / 24).toFixed(1)} days`;
@@ -12,8 +13,8 @@ export function Results({ items }: { items: readonly Compared[] }) {
   const rows: Array<{ name: string; says: (item: Compared) => string }> = [
     { name: 'kind', says: ({ batch }) => KIND_WORDS[batch.kind] },
     { name: 'yeast', says: ({ batch }) => batch.yeast ?? 'not told' },
-    { name: 'original gravity', says: ({ batch }) => batch.original_gravity?.toFixed(3) ?? 'not told' },
-    { name: 'gravity', says: ({ result }) => result.gravity?.toFixed(3) ?? 'not read' },
+    { name: 'original gravity', says: ({ batch }) => (batch.original_gravity === null ? 'not told' : gravityText(batch.original_gravity)) },
+    { name: 'gravity', says: ({ result }) => (result.gravity === null ? 'not read' : gravityText(result.gravity)) },
     { name: 'attenuation', says: ({ result }) => (result.attenuation_percent === null ? 'not known' : `${result.attenuation_percent.toFixed(0)} %`) },
     { name: 'from pitch to the end', says: ({ batch, result }) => (result.hours_to_terminal === null ? (batch.state === 'ended' ? 'not known' : 'not yet') : days(result.hours_to_terminal)) },
     { name: 'lots', says: ({ result }) => String(result.lots) },

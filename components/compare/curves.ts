@@ -1,3 +1,4 @@
+import { gravityText, temperatureText } from '@/components/ui/units';
 import type { CompareBody } from '@/lib/contracts/compare';
 
 export type Compared = CompareBody['items'][number];
@@ -91,4 +92,4 @@ export function tableDays(curves: readonly Curve[]): number[] {
   return [0, 1, 2, 3, 5, 7, 10, 14, 21, 28, 42, 60, 90, 120, 180, 365].filter((day) => day <= last);
 }
 
-export const written = (value: number, measure: Measure): string => (measure === 'gravity' ? value.toFixed(3) : measure === 'share' ? `${value.toFixed(0)} %` : `${value.toFixed(1)} °C`).replace('-', '−');
+export const written = (value: number, measure: Measure): string => (measure === 'gravity' ? gravityText(value) : measure === 'share' ? `${value.toFixed(0)} %`.replace('-', '−') : temperatureText(value));

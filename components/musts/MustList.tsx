@@ -9,6 +9,7 @@ import { FilterTabs } from '@/components/ui/FilterTabs';
 import { Haze } from '@/components/ui/Haze';
 import { EmptyState, ErrorState } from '@/components/ui/Notice';
 import { PageHead } from '@/components/ui/Page';
+import { gravityEnds, gravityText, volumeText } from '@/components/ui/units';
 import { useMe } from '@/lib/client/me';
 import { useMusts } from '@/lib/client/musts';
 import type { MustList as Musts } from '@/lib/contracts/musts';
@@ -26,9 +27,9 @@ function Row({ must, timeZone }: { must: Musts['items'][number]; timeZone: strin
             {must.change_note && `: ${must.change_note}`}
           </p>
         </div>
-        <p className="text-right font-mono text-[0.9375rem] font-semibold strip:text-left">{must.original_gravity ? must.original_gravity.value.toFixed(3) : ''}<span className="type-label block text-ink2">{must.original_gravity ? ends(must.original_gravity, 3) : 'not reckoned yet'}</span></p>
+        <p className="text-right font-mono text-[0.9375rem] font-semibold strip:text-left">{must.original_gravity ? gravityText(must.original_gravity.value) : ''}<span className="type-label block text-ink2">{must.original_gravity ? gravityEnds(must.original_gravity) : 'not reckoned yet'}</span></p>
         <p className="font-mono text-[0.9375rem] font-semibold max-strip:hidden">{must.abv_percent && `${must.abv_percent.value.toFixed(1)} %`}<span className="type-label block text-ink2">{must.abv_percent && ends(must.abv_percent, 1)}</span></p>
-        <p className="type-label text-ink2 max-strip:hidden">{must.volume_l && `${must.volume_l.value.toFixed(1)} L`}</p>
+        <p className="type-label text-ink2 max-strip:hidden">{must.volume_l && volumeText(must.volume_l.value, 1)}</p>
         <p className="type-label text-right text-ink2 max-strip:hidden">
           {must.batches === 0 ? 'no batch yet' : must.batches === 1 ? '1 batch' : `${must.batches} batches`}
           <span className="block">{dayName(Date.parse(must.changed_at) / 1000, timeZone)}</span>

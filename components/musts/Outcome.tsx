@@ -8,6 +8,7 @@ import type { How as HowAnswer } from '@/lib/core/how/how';
 import type { MustOutcome, MustResult } from '@/lib/core/must/sheet';
 import type { DrinkKind } from '@/lib/core/types';
 import { USUAL } from '@/components/batch/kinds';
+import { gravityEnds, gravityText, volumeText } from '@/components/ui/units';
 import { ends, SWEET_WORDS } from './words';
 
 function Row({ name, says, between, how, children }: { name: string; says: string; between?: string | undefined; how: HowAnswer; children?: ReactNode }) {
@@ -126,21 +127,21 @@ export function Outcome({ result, kind, vesselL, missing }: { result: MustResult
       <div className="mt-4">
         <div className="flex items-baseline justify-between gap-3">
           <h3 className="type-verdict">Original gravity</h3>
-          <span className="type-fig-lg">{og.value.toFixed(3)}</span>
+          <span className="type-fig-lg">{gravityText(og.value)}</span>
         </div>
-        <Spread name="Original gravity" {...og} from={1} to={og.hi > 1.13 ? 1.2 : 1.14} write={(value) => value.toFixed(3)} />
+        <Spread name="Original gravity" {...og} from={1} to={og.hi > 1.13 ? 1.2 : 1.14} write={gravityText} />
         <p className="type-label mt-0.5 text-ink2">
-          {ends(og, 3)}
+          {gravityEnds(og)}
           {pitchDiffers && `; ${pitchWords(outcome.gravityAtPitch.value.value, og.value)}`}
         </p>
         <How how={outcome.originalGravity.how} of="original gravity" />
       </div>
       <dl className="border-t">
-        <Row name="volume" says={`${outcome.volumeL.value.value.toFixed(1)} L`} between={spread(outcome.volumeL.value, 1)} how={outcome.volumeL.how} />
-        <Row name="fills" says={`${outcome.fillL.value.value.toFixed(1)} L`} between="with its pulp" how={outcome.fillL.how} />
+        <Row name="volume" says={volumeText(outcome.volumeL.value.value, 1)} between={spread(outcome.volumeL.value, 1)} how={outcome.volumeL.how} />
+        <Row name="fills" says={volumeText(outcome.fillL.value.value, 1)} between="with its pulp" how={outcome.fillL.how} />
         {neck && <Row name="headspace" says={`${neck.headspaceL.value.value.toFixed(1)} L`.replace('-', '−')} between={spread(neck.headspaceL.value, 1)} how={neck.headspaceL.how} />}
         <Row name="fermentable" says={`${Math.round(100 * outcome.fermentableShare.value.value)} %`} between={`${Math.round(100 * outcome.fermentableShare.value.lo)} to ${Math.round(100 * outcome.fermentableShare.value.hi)}`} how={outcome.fermentableShare.how} />
-        <Row name="ends at" says={outcome.finalGravity.value.value.toFixed(3)} between={spread(outcome.finalGravity.value, 3)} how={outcome.finalGravity.how} />
+        <Row name="ends at" says={gravityText(outcome.finalGravity.value.value)} between={gravityEnds(outcome.finalGravity.value)} how={outcome.finalGravity.how} />
         <Row
           name="sweetness"
           says={outcome.sweetness.from === outcome.sweetness.to ? SWEET_WORDS[outcome.sweetness.from] : `${SWEET_WORDS[outcome.sweetness.from]} to ${SWEET_WORDS[outcome.sweetness.to]}`}

@@ -1,4 +1,5 @@
 import { duration, when } from '@/components/charts/zone';
+import { gravityText, temperatureText } from '@/components/ui/units';
 import type { SensorBody, SensorKindName } from '@/lib/contracts/sensors';
 import type { StateWord } from '@/lib/core/calls/attention';
 
@@ -35,8 +36,8 @@ export function linkWords(dBm: number | null | undefined): string {
   return `${word}, −${Math.abs(Math.round(dBm))} dBm`;
 }
 
-export const gravityWords = (gravity: number | null | undefined) => (typeof gravity === 'number' ? gravity.toFixed(3) : '–');
-export const temperatureWords = (celsius: number | null | undefined) => (typeof celsius === 'number' ? `${celsius.toFixed(1).replace('-', '−')} °C` : '–');
+export const gravityWords = (gravity: number | null | undefined) => (typeof gravity === 'number' ? gravityText(gravity) : '–');
+export const temperatureWords = (celsius: number | null | undefined) => (typeof celsius === 'number' ? temperatureText(celsius) : '–');
 
 export const everyWords = (seconds: number) => (seconds < 60 ? `${seconds} s` : duration(seconds));
 

@@ -1,7 +1,9 @@
 'use client';
 
+import { usePathname } from 'next/navigation';
 import type { ReactNode } from 'react';
 import { Keeper } from '@/components/offline/Keeper';
+import { readIn } from '@/components/ui/units';
 import { useAlerts } from '@/lib/client/alerts';
 import { useLiveChanges } from '@/lib/client/use-live-changes';
 import { Header } from './Header';
@@ -17,6 +19,9 @@ export function CellarShell({ children }: { children: ReactNode }) {
   useBelonging();
   const glance = useGlance();
   const { counts } = useAlerts(glance.may('alerts.read') ? { state: 'open', limit: 100 } : null);
+  // The settings show no figures, and a choice made there must not throw the page away.
+  const drawnFor = usePathname().startsWith('/settings') ? 'settings' : Object.values(glance.units).join(' ');
+  readIn(glance.units);
   const places = placesFor(glance.may, counts?.open ?? 0);
   return (
     <>
@@ -25,7 +30,7 @@ export function CellarShell({ children }: { children: ReactNode }) {
       </a>
       <Header glance={glance} places={places} />
       <OfflineBar live={live} timeZone={glance.timeZone} />
-      <main id="page" tabIndex={-1} className="pb-20 outline-none strip:pb-0">
+      <main key={drawnFor} id="page" tabIndex={-1} className="pb-20 outline-none strip:pb-0">
         {children}
       </main>
       <PhoneTabs places={places} />

@@ -1,6 +1,7 @@
 'use client';
 
 import type { Action } from '@/lib/core/actions';
+import { USUAL_UNITS, type ChosenUnits } from '@/lib/core/units/chosen';
 import { useBatches } from '@/lib/client/batches';
 import { useMe } from '@/lib/client/me';
 
@@ -15,6 +16,7 @@ export interface CellarGlance {
   vessels: number | null;
   /** When any sensor in a vessel was last heard. */
   heardAt: number | null;
+  units: ChosenUnits;
   may: (action: Action) => boolean;
 }
 
@@ -30,6 +32,7 @@ export function useGlance(): CellarGlance {
     timeZone: me?.cellar.time_zone ?? 'UTC',
     vessels: batches?.length ?? null,
     heardAt: heard.length > 0 ? Math.max(...heard) : null,
+    units: me?.person.units ?? USUAL_UNITS,
     may,
   };
 }

@@ -1,13 +1,14 @@
 import { splitFigures } from './figures';
+import { figureRead } from './units';
 
-/** A sentence in prose with its figures typed in. `strong` inside a verdict. */
+/** A sentence in prose with its figures typed in, in the units that the person reads. `strong` inside a verdict. */
 export function Sentence({ children, strong = false }: { children: string; strong?: boolean }) {
   return (
     <>
-      {splitFigures(children).map((piece, index) =>
+      {splitFigures(children).map((piece, index, pieces) =>
         piece.figure ? (
           <span key={index} className={strong ? 'fig-strong' : 'fig'}>
-            {piece.text.replace(/^-/, '−')}
+            {figureRead(piece.text.replace(/^-/, '−'), pieces[index - 1]?.text)}
           </span>
         ) : (
           piece.text
