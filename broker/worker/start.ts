@@ -8,6 +8,7 @@ import { dropWhatIsOld } from '@/lib/services/housekeeping';
 import { startHeartbeat } from '../heartbeat';
 import { keepPartitionsAhead } from '../keep-partitions';
 import { startAssessing } from './assessing';
+import { startDelivering } from './delivering';
 import { startRecalculating } from './recalculating';
 import { startSending } from './sending';
 
@@ -45,6 +46,7 @@ export function startWorker({ spacingMs, tickMs, idleMs, sendTimeoutMs }: Worker
   });
   const assessing = startAssessing({ spacingMs, tickMs, idleMs, onJudged: () => sending.wake() });
   const stopHeartbeat = startHeartbeat('worker', () => ({ ...assessing.figures(), ...sending.figures() }));
+  const delivering = startDelivering();
   const recalculating = startRecalculating();
   const stopPartitions = keepPartitionsAhead();
   const tidy = () => void dropWhatIsOld().catch((error: unknown) => log.warn({ err: error }, 'old rows could not be dropped; tried again in an hour'));
@@ -64,7 +66,7 @@ export function startWorker({ spacingMs, tickMs, idleMs, sendTimeoutMs }: Worker
       clearInterval(tidying);
       clearInterval(digesting);
       stopPartitions();
-      await Promise.all([assessing.stop(), recalculating.stop(), sending.stop()]);
+      await Promise.all([assessing.stop(), delivering.stop(), recalculating.stop(), sending.stop()]);
       stopHeartbeat();
     },
   };

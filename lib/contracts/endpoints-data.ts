@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { id } from './common';
 import { byId, endpoint } from './endpoint';
 import { IMPORT_LIMIT_BYTES, importForm, importList, importPreviewForm, importPreviewSchema, importSchema } from './imports';
+import { byDelivery, createdWebhookSchema, createWebhook, deliveryList, updateWebhook, webhookList, webhookSchema } from './webhooks';
 import { photoFile, photoList, photoSchema, photoTarget } from './photos';
 
 const exportQuery = z.object({ batch: id.optional() });
@@ -21,4 +22,12 @@ export const endpointsData = {
   exportCellar: endpoint({ method: 'GET', path: '/export.json', summary: 'Batches with their logs and readings as one archive, of one batch or of all', access: 'data.export', query: exportQuery, response: null, status: 200 }),
   exportTable: endpoint({ method: 'GET', path: '/export/{table}', summary: 'Readings, log or batches as CSV, of one batch or of all', access: 'data.export', params: z.object({ table: z.enum(['readings.csv', 'log.csv', 'batches.csv']) }), query: exportQuery, response: null, status: 200 }),
   getArchiveSchema: endpoint({ method: 'GET', path: '/archive.schema.json', summary: 'The form of the archive as JSON Schema', access: 'anyone', response: null, status: 200 }),
+
+  listWebhooks: endpoint({ method: 'GET', path: '/webhooks', summary: 'Where the cellar tells other programs of changes', access: 'webhooks.manage', response: webhookList, status: 200 }),
+  createWebhook: endpoint({ method: 'POST', path: '/webhooks', summary: 'Tell another program of changes; the answer holds the key that signs, once', access: 'webhooks.manage', body: createWebhook, response: createdWebhookSchema, status: 201 }),
+  updateWebhook: endpoint({ method: 'PATCH', path: '/webhooks/{id}', summary: 'Change a webhook or switch it off', access: 'webhooks.manage', params: byId, body: updateWebhook, response: webhookSchema, status: 200 }),
+  removeWebhook: endpoint({ method: 'DELETE', path: '/webhooks/{id}', summary: 'Remove a webhook with its deliveries', access: 'webhooks.manage', params: byId, response: null, status: 204 }),
+  tryWebhook: endpoint({ method: 'POST', path: '/webhooks/{id}/try', summary: 'Send a delivery that says nothing, to see whether it arrives', access: 'webhooks.manage', params: byId, response: null, status: 204 }),
+  listDeliveries: endpoint({ method: 'GET', path: '/webhooks/{id}/deliveries', summary: 'What was delivered, what waits, what was given up', access: 'webhooks.manage', params: byId, response: deliveryList, status: 200 }),
+  deliverAgain: endpoint({ method: 'POST', path: '/webhooks/{id}/deliveries/{deliveryId}/again', summary: 'Send a delivery again that did not arrive', access: 'webhooks.manage', params: byDelivery, response: null, status: 204 }),
 };

@@ -1,10 +1,12 @@
 import type { Transaction } from 'sequelize';
 import { database } from '@/db/client';
 import { listen, type Listener } from '@/db/listen';
+import { oweDeliveries } from '@/db/queries/webhooks';
 import { CHANGES_CHANNEL, changeSchema, EVERY_CELLAR, type Change } from '../contracts/events';
 
-/** Says that something changed, once `transaction` commits; with a rollback nothing is said. It carries no data. */
+/** Says that something changed, once `transaction` commits; with a rollback nothing is said. It carries no data. Webhooks that asked for it are owed a delivery with it. */
 export async function notifyChange(change: Change, transaction: Transaction): Promise<void> {
+  await oweDeliveries(change, transaction);
   await database().query('select pg_notify($channel, $payload)', { bind: { channel: CHANGES_CHANNEL, payload: JSON.stringify(change) }, transaction });
 }
 
