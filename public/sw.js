@@ -92,6 +92,16 @@ async function keepAnswer(key, response, asked) {
   if (keys.length > MOST_DATA) await Promise.all(keys.slice(0, keys.length - MOST_DATA).map((old) => cache.delete(old)));
 }
 
+/** Goes on with it when the answer has gone already; then the browser may cut it short. @param {any} event @param {Promise<unknown>} work */
+function afterwards(event, work) {
+  const quiet = work.catch(() => undefined);
+  try {
+    event.waitUntil(quiet);
+  } catch {
+    // The event is over; the work runs on as long as the worker does.
+  }
+}
+
 /** @param {string} key */
 async function keptAnswer(key) {
   const name = await dataName();
@@ -103,9 +113,11 @@ async function fromApi(event, key) {
   const asked = epoch;
   const network = fetch(event.request).then(async (response) => {
     if (response.status === 401) await forget();
-    event.waitUntil(keepAnswer(key, response.clone(), asked).catch(() => undefined));
+    afterwards(event, keepAnswer(key, response.clone(), asked));
     return response;
   });
+  // It may fail when nobody waits for it any more.
+  network.catch(() => undefined);
   const late = new Promise((resolve) => setTimeout(resolve, PATIENCE_MS, null));
   try {
     const first = await Promise.race([network, late]);
@@ -125,7 +137,7 @@ async function fromPages(event, url) {
   const asked = epoch;
   try {
     const response = await fetch(event.request);
-    if (isPage(response, url)) event.waitUntil(keepPage(url.pathname, response.clone(), asked).catch(() => undefined));
+    if (isPage(response, url)) afterwards(event, keepPage(url.pathname, response.clone(), asked));
     return response;
   } catch {
     const pages = await caches.open(PAGES);

@@ -26,13 +26,14 @@ export function useAllUnsent(): Unsent[] {
   return entries;
 }
 
-/** What waits of the person here, of one batch or of all. An entry on its way from an open form is not among them. */
+/** What waits of the person here in this cellar, of one batch or of all; another cellar's goes when that one is shown. An entry on its way from an open form is not among them. */
 export function useUnsent(batchId?: string): Unsent[] {
   const { me } = useMe();
-  return useAllUnsent().filter((entry) => entry.personId === me?.person.id && entry.state !== 'sending' && (batchId === undefined || entry.batchId === batchId));
+  return useAllUnsent().filter((entry) => entry.personId === me?.person.id && entry.cellarId === me.cellar.id && entry.state !== 'sending' && (batchId === undefined || entry.batchId === batchId));
 }
 
 const AGAIN_MS = 15_000;
+const SOON_MS = 400;
 
 /** Once, in the shell: sends what waits when the line is back, when the page is opened, and now and then. */
 export function useSendingUnsent(): Stopped {
@@ -52,10 +53,18 @@ export function useSendingUnsent(): Stopped {
         () => undefined,
       );
     send();
+    // Soon after something was put by too: it may have been a sign-in that ended, and not the network.
+    let soon: ReturnType<typeof setTimeout> | undefined;
+    const stop = onUnsentChange(() => {
+      clearTimeout(soon);
+      soon = setTimeout(send, SOON_MS);
+    });
     const timer = setInterval(send, AGAIN_MS);
     window.addEventListener('online', send);
     return () => {
       gone = true;
+      stop();
+      clearTimeout(soon);
       clearInterval(timer);
       window.removeEventListener('online', send);
     };
