@@ -42,7 +42,14 @@ export function Versions({ must, timeZone, onVersion }: { must: MustBody; timeZo
       </ol>
       {must.batches.length > 0 && (
         <>
-          <h3 className="type-verdict mt-4">Made from it</h3>
+          <div className="mt-4 flex flex-wrap items-baseline justify-between gap-x-4">
+            <h3 className="type-verdict">Made from it</h3>
+            {must.batches.length > 1 && (
+              <Link href={`/compare?batches=${must.batches.slice(0, 8).map((batch) => batch.id).join(',')}`} className="type-label">
+                Compare them
+              </Link>
+            )}
+          </div>
           <ul>
             {must.batches.map((batch) => (
               <li key={batch.id} className="border-b border-rule">

@@ -3,8 +3,9 @@ import { createShare as shareForm } from '@/lib/contracts/shares';
 import { createTasting as tastingForm, guestTasting } from '@/lib/contracts/tastings';
 import { ForbiddenError, NotFoundError, ThrottledError } from '@/lib/errors';
 import type { Actor } from '@/lib/auth/policies';
-import { Entry, Share } from '@/db/models';
+import { Entry, Job, Share } from '@/db/models';
 import { bottleBatch } from '@/lib/services/bench/bottle';
+import { getLot } from '@/lib/services/lots/get';
 import { compareBatches } from '@/lib/services/compare/compare';
 import { createShare, listShares, revokeShare } from '@/lib/services/shares/manage';
 import { getShared, tasteShared } from '@/lib/services/shares/shared';
@@ -45,6 +46,20 @@ describe('tasting notes', () => {
     await expect(removeTasting(guest, other.id, clock)).rejects.toBeInstanceOf(ForbiddenError);
     await removeTasting(guest, own.id, clock);
     expect((await listTastings(guest, lot.id)).summary.count).toBe(2);
+  });
+
+  it('that it gushed, by whom ever, are a caution on the whole lot and one job for now', async () => {
+    const brewer = await buildMember('brewer');
+    const guest = await buildMember('guest', { cellarId: brewer.cellarId });
+    const { batch, lot } = await aLot(brewer);
+    await createTasting(guest, lot.id, note({ sparkle: 'more' }), clock);
+    expect((await getLot(brewer, lot.id, clock)).caution).toBeNull();
+    await createTasting(guest, lot.id, note({ sparkle: 'gushing' }), clock);
+    expect((await getLot(brewer, lot.id, clock)).caution).toContain('gushed');
+    const share = await createShare(brewer, batch.id, shareForm.parse({}), clock);
+    await tasteShared(tokenOf(share.url), guestTasting.parse({ lot_id: lot.id, sparkle: 'gushing' }), '203.0.113.9', clock);
+    expect(await Job.count({ where: { lotId: lot.id, kind: 'pressure', doneAt: null } })).toBe(1);
+    expect((await getShared(tokenOf(share.url), clock)).lots[0]).toMatchObject({ caution: true });
   });
 
   it('say something, in the ranges of the sheet', () => {

@@ -10,10 +10,8 @@ import { auditBy } from '../audit/write';
 import { notifyChange } from '../changes';
 import { notAhead } from '../family/flow';
 import { getLot } from './get';
-import { gushedJob } from './jobs';
+import { markGushed } from './gushed';
 import { loadBottle, loadLot } from './load';
-
-const GUSHED = 'A bottle gushed. Eye protection and gloves for the others; move the lot somewhere cold, chill each one before it is opened, open it outdoors, away from faces.';
 
 /** Opened, given away, broken or gushed. A gush is a caution on the whole lot, and a job for now. */
 export async function openBottles(actor: Actor, lotId: string, input: OpenBottles, clock: Clock = systemClock): Promise<LotBody> {
@@ -30,11 +28,7 @@ export async function openBottles(actor: Actor, lotId: string, input: OpenBottle
       { cellarId: actor.cellarId, lotId, lotBottleId: bottle.id, placeId: input.place_id, kind: input.kind, count: input.count, at, givenTo: input.to, note: input.note, personId: actor.personId, clientId: input.client_id },
       { transaction },
     );
-    if (input.kind === 'gushed') {
-      // A caution that is there already keeps its words: why it was put aside must not be written over.
-      await lot.update({ caution: lot.caution === null ? GUSHED : lot.caution.includes('gushed') ? lot.caution : `${lot.caution} ${GUSHED}` }, { transaction });
-      await gushedJob(lot, new Date(clock.now()), transaction);
-    }
+    if (input.kind === 'gushed') await markGushed(lot, new Date(clock.now()), transaction);
     await auditBy(actor, `lot.${input.kind}`, lotId, { opening: opening.id, count: input.count }, transaction);
     await notifyChange({ cellar: actor.cellarId, kind: 'lot', batch: null }, transaction);
     return getLot(actor, lotId, clock, transaction);

@@ -10,6 +10,7 @@ import { auditBy } from '../audit/write';
 import { notifyChange } from '../changes';
 import { namesOf } from '../entries/names';
 import { notAhead } from '../family/flow';
+import { markGushed } from '../lots/gushed';
 import { loadLot } from '../lots/load';
 import { mayRemoveTasting, presentTasting } from './present';
 import { summaryOf } from './summary';
@@ -31,6 +32,8 @@ export async function writeTasting(lot: Lot, input: CreateTasting | GuestTasting
   if (known && known.lotId !== lot.id) throw new ConflictError('This was sent for another lot.');
   if (known) return known;
   const tasting = await Tasting.create({ cellarId: lot.cellarId, lotId: lot.id, ...figuresOf(input), ...by, clientId: input.client_id }, { transaction });
+  // Told at the table is told: the other bottles do not wait for somebody to write it into the book.
+  if (input.sparkle === 'gushing') await markGushed(lot, by.at, transaction);
   await notifyChange({ cellar: lot.cellarId, kind: 'lot', batch: null }, transaction);
   return tasting;
 }
