@@ -7,15 +7,20 @@ import { hold } from './latch';
 export { LOOK_H } from './intake';
 
 /** Points that may still come, nine times in ten, when a batch may be racked, when it is called finished, and when it may be bottled. */
-export const RACK_POINTS = 3.4;
+export const RACK_POINTS = 3.9;
 export const TERMINAL_POINTS = 1.7;
 export const BOTTLE_POINTS = 1.0;
 /** Hours after the pitch at which a start is overdue. */
 export const OVERDUE_H: Record<BatchSetup['kind'], number> = { beer: 48, cider: 72, mead: 72, wine: 72 };
 
+/** Hours that a cold vessel may need to work as it could, once it is warm again (ours). */
+const WARMING_H = 60;
+
 /** The rules, one look every three hours: what turns each statement on, and what turns it off again. */
 export class Watch extends Intake {
   private noise = 0.5;
+  /** Hour of the last look at which it was cold. */
+  private lastCold: number | null = null;
 
   /** Takes in what was measured before `hour` and applies every rule once. */
   look(hour: number, readings: Reading[]): void {
@@ -79,7 +84,7 @@ export class Watch extends Intake {
       const rate = -line.slope;
       const most = this.maxRates.get(window);
       if (rate > 1 && (!most || rate > most.rate)) this.maxRates.set(window, { rate, se: line.se });
-      else if (most && most.rate - rate > Math.max(0.06 * most.rate, 1.3 * Math.hypot(line.se, most.se))) below = true;
+      else if (most && most.rate - rate > Math.max(0.06 * most.rate, 1.15 * Math.hypot(line.se, most.se))) below = true;
       if (window === 24 && rate > this.maxRate) this.maxRate = rate;
     }
     let fitted = false;
@@ -109,8 +114,11 @@ export class Watch extends Intake {
     }
     const limit = this.swapGas();
     // A cold vessel with sugar left is quiet only until somebody warms it.
-    const waiting = this.coldNow() && this.gasIfWarmed() > limit;
-    hold(this.airlock, hour, this.peaked.on && upper < limit && !waiting, 3, lower > 1.3 * limit || waiting);
+    if (this.coldNow()) this.lastCold = hour;
+    const waiting = this.lastCold !== null && hour - this.lastCold < WARMING_H && this.gasIfWarmed() > limit;
+    // Fresh sugar is not at its strongest at once, and yeast that had come to rest wakes slowly.
+    const settled = this.quietSinceAddition(this.sweetened ? 72 : 24, 72);
+    hold(this.airlock, hour, upper < limit && settled && !waiting, 3, lower > 1.3 * limit || waiting);
   }
 
   private noteLowest(): void {
@@ -180,12 +188,12 @@ export class Watch extends Intake {
 
     const rate = line48 ? -line48.slope : null;
     let crawling = false;
-    if (this.peaked.on && hour > 48 && line48 && rate !== null && rate + line48.se < 2 && level > prior.mean + 9 && !this.stuck.on && settled) {
+    if (this.peaked.on && hour > 48 && line48 && rate !== null && rate + line48.se < 2.2 && level > prior.mean + 7.5 && !this.stuck.on && this.quietSinceAddition(60, 96)) {
       const end = this.hoursToEnd();
       const fg = this.expectedFg();
-      crawling = (end !== null && end > 144) || (fg !== null && fg > this.zoneTop());
+      crawling = (end !== null && end > 130) || (fg !== null && fg > this.zoneTop());
     }
-    hold(this.sluggish, hour, crawling, 4, (rate !== null && rate > 2.6) || level < prior.mean + 6 || this.stuck.on);
+    hold(this.sluggish, hour, crawling, 3, (rate !== null && rate > 2.6) || level < prior.mean + 5 || this.stuck.on);
   }
 
   private judgeRefermentation(hour: number): void {
