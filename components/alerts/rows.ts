@@ -55,8 +55,9 @@ export function alertFate(alert: AlertBody, now: number, timeZone: string): { te
       ...(look ? [{ text: `${seconds(look) <= now ? 'was to look' : 'looks'} again ${at(look)}`, strong: false }] : []),
     ];
   }
-  if (alert.told.length === 0) return [{ text: 'nobody told yet', strong: false }];
-  const told = toldLines(alert, now, timeZone).map((line) => ({ text: line.text, strong: false }));
+  const muted = alert.muted_until === null || alert.level === 'act' ? [] : [{ text: `muted until ${at(alert.muted_until)}`, strong: false }];
+  if (alert.told.length === 0) return [...muted, { text: 'nobody told yet', strong: false }];
+  const told = [...muted, ...toldLines(alert, now, timeZone).map((line) => ({ text: line.text, strong: false }))];
   return told.length > 2 ? [told[0]!, { text: `and ${told.length - 1} more`, strong: false }] : told;
 }
 
