@@ -9,6 +9,8 @@ import type { Call } from '@/lib/core/types';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildCellar, buildEntry, buildMember, buildSensor } from '../support/factories';
 import { jobRows } from '../support/job-rows';
+import { dataRows } from '../support/data-rows';
+import { dataThings } from '../support/data-things';
 import { jobThings } from '../support/job-things';
 import { messageRows, messageThings } from '../support/message-rows';
 import { buildToken, peopleRows, peopleThings } from '../support/people-rows';
@@ -18,10 +20,10 @@ import { call, sessionCookie, startWeb, type Web } from '../support/web';
 const ROUTES = join(import.meta.dirname, '../../app/api/v1');
 
 /** A part of the API that brings routes brings its rows: name them here. */
-const TABLE: Partial<Record<EndpointName, RoleRow>> = { ...watchRows, ...jobRows, ...peopleRows, ...messageRows };
+const TABLE: Partial<Record<EndpointName, RoleRow>> = { ...watchRows, ...jobRows, ...peopleRows, ...messageRows, ...dataRows };
 
 /** Tested where they are at home: by a sensor's credential, in the open, by an address or a secret that is the key, by a code of an authenticator, as a stream. */
-const ELSEWHERE = new Set<string>(['postTelemetry', 'getOpenApi', 'streamEvents', 'readCalendar', 'getShared', 'tasteShared', 'getTakeLink', 'useTakeLink', 'lookAtInvitation', 'joinByInvitation', 'askForSignInLink', 'askForPassphraseLink', 'resetPassphrase', 'confirmMail', 'confirmSecondFactor', 'endSecondFactor', 'renewRecoveryCodes'] satisfies EndpointName[]);
+const ELSEWHERE = new Set<string>(['postTelemetry', 'getOpenApi', 'streamEvents', 'readCalendar', 'getShared', 'tasteShared', 'getTakeLink', 'useTakeLink', 'lookAtInvitation', 'joinByInvitation', 'askForSignInLink', 'askForPassphraseLink', 'resetPassphrase', 'confirmMail', 'confirmSecondFactor', 'endSecondFactor', 'renewRecoveryCodes', 'keepPhoto', 'openPhoto', 'getArchiveSchema'] satisfies EndpointName[]);
 
 const EVIDENCE: Call = { verdict: 'yes', kind: 'stuck', since: 0, expectedAt: null, headline: 'Warm it.', reason: 'No fall.', act: null, changesIt: null, evidence: [] };
 
@@ -32,7 +34,7 @@ async function things(cellarId: string, personId: string): Promise<Things> {
   const { sensor } = await buildSensor({ batch });
   const alert = await Alert.create({ cellarId, batchId: batch.id, call: 'stalled', kind: 'stuck', level: 'check', state: 'open', since: new Date(), openedAt: new Date(), evidence: EVIDENCE });
   const signIn = await SignIn.create({ personId, expiresAt: new Date(Date.now() + 3_600_000) });
-  return { batchId: batch.id, entryId: entry.id, sensorId: sensor.identifier, alertId: alert.id, signInId: signIn.id, cellarId, ...(await peopleThings(cellarId, personId)), ...(await messageThings({ cellarId, batchId: batch.id, personId, signInId: signIn.id })), ...(await jobThings({ ...other, role: 'brewer' }, personId)) };
+  return { batchId: batch.id, entryId: entry.id, sensorId: sensor.identifier, alertId: alert.id, signInId: signIn.id, cellarId, ...(await peopleThings(cellarId, personId)), ...(await messageThings({ cellarId, batchId: batch.id, personId, signInId: signIn.id })), ...(await jobThings({ ...other, role: 'brewer' }, personId)), ...(await dataThings({ ...other, role: 'brewer' })) };
 }
 
 describe('who may do what', () => {

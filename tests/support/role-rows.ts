@@ -1,5 +1,6 @@
 import type { EndpointName } from '@/lib/contracts/endpoints';
 import type { Role } from '@/lib/core/roles';
+import type { DataThings } from './data-things';
 import type { JobThings } from './job-things';
 import type { PeopleThings } from './people-rows';
 
@@ -9,7 +10,7 @@ export const NOT_GUESTS: Who[] = ['keeper', 'brewer', 'hand'];
 export const BREWERS: Who[] = ['keeper', 'brewer'];
 
 /** One cellar's things, fresh for each request, so that one request does not decide the next. */
-export interface Things extends JobThings, PeopleThings {
+export interface Things extends JobThings, PeopleThings, DataThings {
   batchId: string;
   entryId: string;
   muteId: string;
