@@ -1,6 +1,6 @@
 'use client';
 
-import { useMemo, useState } from 'react';
+import { useDeferredValue, useMemo, useState } from 'react';
 import type { Laid } from '@/components/charts/picture';
 import type { BatchBody } from '@/lib/contracts/batches';
 import { layBeside, type OtherCurve } from '@/lib/core/fit/other';
@@ -31,11 +31,13 @@ export function usePlays(batch: BatchBody, footing: Footing | null, now: number,
   const [open, setOpen] = useState<PlayKind | null>(null);
   const [draft, setDraft] = useState<WhatIfDraft>(NOTHING_ELSE);
   const [curve, setCurve] = useState<OtherCurve>('logistic');
+  // The field shows each stroke at once; the curve follows.
+  const settled = useDeferredValue(draft);
   const close = () => {
     setOpen(null);
     setDraft(NOTHING_ELSE);
   };
-  const played = useMemo(() => (open === 'what-if' && footing ? play(draft, batch, footing, now, timeZone) : NOTHING_PLAYED), [open, footing, draft, batch, now, timeZone]);
+  const played = useMemo(() => (open === 'what-if' && footing ? play(settled, batch, footing, now, timeZone) : NOTHING_PLAYED), [open, footing, settled, batch, now, timeZone]);
   const beside = useMemo(() => (open === 'curve' && footing ? layBeside(footing, curve) : null), [open, footing, curve]);
   const laid = useMemo(() => {
     if (played.laid) return [played.laid];

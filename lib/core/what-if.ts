@@ -198,6 +198,8 @@ function told({ footing, vessel, pace, volumeL, effectiveOg, level }: Scene, { c
     if (value > most.value) most = { value, at: at(ahead) };
     if (value >= limit) over = ahead;
   }
+  // As long as the krausen builds the tube stays on, whatever the figure says.
+  if (!footing.peaked && most.value > 0) over = Math.max(over ?? 0, (most.at - footing.at) / HOUR_MS);
   // A new stretch is known as well as its share of the whole fall allows, not as well as the old one was.
   const done = effectiveOg === footing.effectiveOg ? footing.done : Math.min(0.99, Math.max(0, (effectiveOg - level) / Math.max(1, effectiveOg - fg)));
   const interval = hours === null ? null : hoursInterval(hours, done);

@@ -133,6 +133,14 @@ describe('what if', () => {
     expect(tight.neck.tubeUntil).toBeGreaterThan(PITCH + 4 * DAY);
   });
 
+  it('keeps the tube on while the krausen builds, even where the gas would stay low', () => {
+    const judgement = judged(2.5);
+    expect(judgement.footing.peaked).toBe(false);
+    const slow = whatIf(judgement.footing, { ...setup, vesselL: 20 }, { temperatureC: 10 })!;
+    expect(slow.gas.value).toBeLessThan(slow.neck.limit);
+    expect(slow.neck.tubeUntil).toBeGreaterThan(PITCH + 2.5 * DAY);
+  });
+
   it('it were fed once it is done begins anew, and without food stays where it is', () => {
     const done = judged(40);
     expect(done.footing.state).toBe('terminal');
