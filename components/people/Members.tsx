@@ -26,7 +26,7 @@ function MemberRow({ member, mine, manage, busy, act, onHandOver }: { member: Me
       </div>
       {manage ? (
         <div className="flex flex-wrap items-center gap-2 strip:justify-end">
-          <Select label={<span className="heard-only">Role of {person.name}</span>} className="w-60! -mt-1" value={role} disabled={busy} onChange={(event) => act(() => changeRole(person.id, event.target.value as Role))}>
+          <Select label={<span className="heard-only">Role of {person.name}</span>} className="-mt-1 w-60 max-strip:w-full" value={role} disabled={busy} onChange={(event) => act(() => changeRole(person.id, event.target.value as Role))}>
             {ROLES.map((item) => (
               <option key={item} value={item}>
                 {ROLE_WORDS[item]}

@@ -72,8 +72,8 @@ export function AuditTrail() {
               </option>
             ))}
           </Select>
-          <Field label="from" type="date" value={from} className="w-44 max-strip:flex-1" onChange={(event) => setFrom(event.target.value)} />
-          <Field label="to and with" type="date" value={to} className="w-44 max-strip:flex-1" onChange={(event) => setTo(event.target.value)} />
+          <Field label="from" type="date" value={from} className="w-44 max-strip:flex-1 max-strip:basis-[42%]" onChange={(event) => setFrom(event.target.value)} />
+          <Field label="until, that day too" type="date" value={to} className="w-44 max-strip:flex-1 max-strip:basis-[42%]" onChange={(event) => setTo(event.target.value)} />
           <div className="flex gap-2 strip:ml-auto">
             <a className={buttonClass('plain', 'normal')} href={trailFile('csv', filter)} download>
               Save as CSV

@@ -44,17 +44,17 @@ export function SignIns() {
       {failed && <FormError>{failed}</FormError>}
       <ul>
         {signIns.map((signIn) => (
-          <li key={signIn.id} className="grid items-center gap-x-5 gap-y-1 border-b border-rule px-(--margin) py-2 strip:grid-cols-[minmax(0,1fr)_auto_auto]">
+          <li key={signIn.id} className="grid grid-cols-[minmax(0,1fr)_auto] items-center gap-x-5 gap-y-1 border-b border-rule px-(--margin) py-2 strip:grid-cols-[minmax(0,1fr)_auto_auto]">
             <span className="type-body min-w-0 break-words">{browserWords(signIn.user_agent)}</span>
-            <span className="type-label text-ink2">
+            <span className="type-label text-ink2 max-strip:col-start-1">
               since {dayName(Date.parse(signIn.created_at) / 1000, timeZone)}, seen {when(Date.parse(signIn.last_seen_at) / 1000, now, timeZone)}
             </span>
             {signIn.current ? (
-              <span className="type-label strip:w-28 strip:text-right" style={{ fontWeight: 600 }}>
+              <span className="type-label max-strip:col-start-2 max-strip:row-span-2 max-strip:row-start-1 strip:w-28 strip:text-right" style={{ fontWeight: 600 }}>
                 this one
               </span>
             ) : (
-              <Button size="lane" disabled={busy} className="strip:w-28" onClick={() => void run(() => endSignIn(signIn.id))}>
+              <Button size="lane" disabled={busy} className="max-strip:col-start-2 max-strip:row-span-2 max-strip:row-start-1 strip:w-28" onClick={() => void run(() => endSignIn(signIn.id))}>
                 End it
               </Button>
             )}

@@ -21,6 +21,10 @@ export const SECTIONS: readonly Section[] = [
   { href: '/settings/shares', name: 'Share links', says: 'addresses that show one batch to anybody', of: 'The cellar', needs: 'shares.manage' },
   { href: '/settings/audit', name: 'Audit trail', says: 'who did what, when, from where', of: 'The cellar', needs: 'audit.read' },
   { href: '/settings/messages', name: 'Messages', says: 'what you hear of, when, and by which means; who is told next', of: 'You', needs: 'alerts.read' },
+  { href: '/settings/sensors', name: 'Sensors', says: 'when a cell, a link or a clock is worth a word', of: 'The cellar', needs: 'sensors.read' },
+  { href: '/settings/data', name: 'Data', says: 'take all of it out, bring logs and old batches in', of: 'The cellar', needs: 'data.import' },
+  { href: '/settings/webhooks', name: 'Webhooks', says: 'other programs that are told of changes', of: 'The cellar', needs: 'webhooks.manage' },
+  { href: '/settings/api', name: 'API', says: 'what programs can ask, to read and to try', of: 'The cellar' },
 ];
 
 export const sectionsFor = (may: (action: Action) => boolean): Section[] => SECTIONS.filter(({ needs }) => needs === undefined || may(needs));
