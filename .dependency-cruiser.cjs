@@ -18,7 +18,8 @@ module.exports = {
     only('contracts', '^lib/contracts/', ['^lib/core/']),
     only('leaves', '^lib/(errors|log|clock|origin)\\.ts$|^lib/config/', [LEAVES]),
     only('policies', '^lib/auth/policies\\.ts$', ['^lib/core/']),
-    only('db', '^db/', ['^lib/core/', LEAVES]),
+    only('db', '^db/(?!seed/)', ['^lib/core/', LEAVES]),
+    only('seed', '^db/seed/', ['^lib/(core|contracts)/', LEAVES], 'What the demo says is written in the words of the requests that bring it in.'),
     only('transports', '^lib/(mail|push|storage)/', ['^lib/core/', LEAVES]),
     {
       ...only('services', '^lib/services/', ['^lib/(core|contracts|mail|push|storage)/', LEAVES, '^lib/auth/', '^db/'], 'Services know core, contracts, auth, db and transports; no HTTP, no framework.'),

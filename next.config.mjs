@@ -1,5 +1,5 @@
 /** @type {import('next').NextConfig} */
-export default {
+const nextConfig = {
   // Both bundlers lose pg when they bundle Sequelize's dynamic require, and pdfkit the files beside it.
   serverExternalPackages: ['sequelize', 'umzug', 'pdfkit'],
   poweredByHeader: false,
@@ -10,3 +10,5 @@ export default {
   distDir: process.env.NEXT_DIST_DIR ?? '.next',
   typescript: { ignoreBuildErrors: true }, // `npm run typecheck` checks all folders, the build only some
 };
+
+export default nextConfig;

@@ -1,1 +1,3 @@
-export default { plugins: { '@tailwindcss/postcss': {} } };
+const postcssConfig = { plugins: { '@tailwindcss/postcss': {} } };
+
+export default postcssConfig;

@@ -1,6 +1,6 @@
 /** What the demo's cellar made before this season: bottled, opened, tasted. */
-import type { BottleBatchForm } from '../../lib/contracts/bench';
-import type { CreateTasting } from '../../lib/contracts/tastings';
+import type { BottleBatchForm } from '@/lib/contracts/bench';
+import type { CreateTasting } from '@/lib/contracts/tastings';
 
 export interface DemoPlace {
   name: string;
