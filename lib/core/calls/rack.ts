@@ -42,15 +42,9 @@ export function rackCall(scene: Scene): Call {
 
 /** Hours until the curve has 2 points left, and the looks it takes to be sure; null without a curve. */
 function hoursToRack(scene: Scene): number | null {
-  const { watch, hour } = scene;
+  const { watch } = scene;
   const fit = watch.fit();
   if (!fit || fit.curve.fg > watch.zoneTop()) return null;
-  const { curve } = fit;
-  const drop = curve.og - curve.fg;
-  if (drop <= 2) return 0;
-  const warmth = watch.track.warmthAt(hour);
-  const tau0 = watch.track.tauAt(hour) - watch.track.tauAt(watch.segment.from);
-  const tau = Math.max(tau0, curve.tauOfShare(2 / drop));
-  if (!Number.isFinite(tau)) return null;
-  return ((tau - tau0) / warmth) * 24 + 9;
+  const hours = watch.hoursUntilLeft(2);
+  return hours === null || !Number.isFinite(hours) || hours === 0 ? hours : hours + 9;
 }

@@ -12,6 +12,8 @@ const FACTOR_80 = [0.92, 0.95, 0.95, 0.98, 1.1, 1.6];
 const FACTOR_95 = [1.15, 1.15, 1.15, 1.15, 1.8, 3.0];
 /** Half width of the 80 % interval of ln(time to the end + 12 h). */
 const DATE_80 = [0.87, 0.61, 0.56, 0.52, 0.69, 1.2];
+/** By how much the curve's hours to go are too many, as the logarithm of the hours and 12: the middle on the tuning seeds. */
+const DATE_LATE = [0.2, 0.2, 0.12, 0.06, 0.06, 0];
 const Z80 = 1.2816;
 const Z95 = 1.96;
 /** What the curve's own shape may be wrong by at the end, points. */
@@ -38,4 +40,9 @@ export function hoursInterval(hours: number, done: number): { lo: number; hi: nu
     lo: Math.max(0, (hours + 12) * Math.exp(-kappa) - 12),
     hi: (hours + 12) * Math.exp(kappa) - 12,
   };
+}
+
+/** The hours still to go by the curve alone, without its leaning to the late side. */
+export function calibratedHours(hours: number, done: number): number {
+  return Math.max(0, (hours + 12) * Math.exp(-DATE_LATE[progressBin(done)]!) - 12);
 }

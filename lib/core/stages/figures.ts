@@ -1,5 +1,6 @@
 import type { BatchSetup, Instant, Neck } from '../types';
 import type { CurveFit } from '../fit/map';
+import { calibratedHours } from '../fit/intervals';
 import { finalGravityPrior, type Normal } from '../fit/priors';
 import { gasLPerH, swapGasLPerH } from '../gas/gas';
 import type { Line } from '../series/line';
@@ -11,6 +12,10 @@ import { latch } from './latch';
 
 /** Hours between two views of the tail, which hardly changes from look to look. */
 const TAIL_H = 6;
+
+/** Share of the fall from which the tail tells of the date, and the share more at which it alone does (own simulations). */
+const TAIL_SPEAKS_FROM = 0.6;
+const TAIL_TAKES_OVER = 0.3;
 
 interface TailCache {
   at: number;
@@ -256,19 +261,33 @@ export class Figures {
     return left === null || level === null ? null : level - left.value;
   }
 
-  /** Hours until the gravity is within a point of its end: from the curve, near the end from the tail as well; null without either. */
+  /** Hours until the gravity is within a point of its end; null without a curve or a tail. */
   hoursToEnd(): number | null {
+    return this.hoursUntilLeft(1);
+  }
+
+  /**
+   * Hours until so many points are left. The curve tells it while most of the fall is to come,
+   * the tail where it is nearly over; between the two both, the more the tail the further it is.
+   */
+  hoursUntilLeft(points: number): number | null {
     const fit = this.fit();
-    const tail = this.tailNow();
-    const byTail = tail && (tail.likely <= 1 ? 0 : (24 * Math.log(tail.likely)) / tail.pace);
+    const level = this.levelNow();
+    const done = this.progress(level);
+    const tail = this.peaked.on && level !== null && done > TAIL_SPEAKS_FROM ? this.tail() : null;
+    const left = tail && level !== null ? this.againstRange(level, tail).value : 0;
+    const byTail = tail && (left <= points ? 0 : (24 * Math.log(left / points)) / tail.pace);
     if (!fit) return byTail;
     const { curve } = fit;
     const drop = curve.og - curve.fg;
-    if (drop <= 1) return 0;
+    if (drop <= points) return 0;
     const tauNow = this.track.tauAt(this.lookedAt) - this.track.tauAt(this.segment.from);
-    const byCurve = Math.max(0, ((curve.tauOfShare(1 / drop) - tauNow) / this.track.warmthAt(this.lookedAt)) * 24);
+    const span = ((curve.tauOfShare(points / drop) - tauNow) / this.track.warmthAt(this.lookedAt)) * 24;
+    const byCurve = calibratedHours(Math.max(0, span), done);
+    if (byTail === null) return byCurve;
     // Spans of time spread evenly in their logarithm; half a day keeps it tame near nought.
-    return byTail === null ? byCurve : Math.sqrt((byCurve + 12) * (byTail + 12)) - 12;
+    const share = Math.min(1, (done - TAIL_SPEAKS_FROM) / TAIL_TAKES_OVER);
+    return Math.exp((1 - share) * Math.log(byCurve + 12) + share * Math.log(byTail + 12)) - 12;
   }
 
   /** Share of the whole expected fall that is done, 0 to 1. */
