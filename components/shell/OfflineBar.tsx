@@ -4,13 +4,17 @@ import Link from 'next/link';
 import { barWords } from '@/components/offline/words';
 import { StateMark } from '@/components/ui/StateMark';
 import { useNow } from '@/components/ui/now';
-import { useKeptSince } from '@/lib/client/kept';
+import { useCatchingUp, useKeptSince } from '@/lib/client/kept';
 import type { LiveState } from '@/lib/client/live';
 import { useSendingUnsent, useUnsent } from '@/lib/client/unsent/use-unsent';
+import { refresh } from '@/lib/client/use-resource';
+
+const everything = () => refresh(() => true);
 
 /** Under the header while the line to the server is down, or something waits to be sent; it goes away by itself. */
 export function OfflineBar({ live, timeZone }: { live: LiveState; timeZone: string }) {
   const keptSince = useKeptSince();
+  useCatchingUp(live.state === 'online', everything);
   const unsent = useUnsent();
   const stopped = useSendingUnsent();
   const now = useNow();

@@ -1,6 +1,6 @@
 'use client';
 
-import { useSyncExternalStore } from 'react';
+import { useEffect, useSyncExternalStore } from 'react';
 
 interface Kept {
   /** When the server gave it, ms. */
@@ -40,3 +40,15 @@ const subscribe = (listener: () => void) => {
 
 /** How old the oldest thing shown is, ms since 1970; null: all of it is the server's. */
 export const useKeptSince = (): number | null => useSyncExternalStore(subscribe, () => oldest, () => null);
+
+const AGAIN_MS = 8_000;
+
+/** Asks again for what the device answered, as long as the line is up: a slow server answers in the end. */
+export function useCatchingUp(online: boolean, askAgain: () => Promise<unknown>): void {
+  const stale = useKeptSince() !== null;
+  useEffect(() => {
+    if (!online || !stale) return;
+    const timer = setInterval(() => void askAgain().catch(() => undefined), AGAIN_MS);
+    return () => clearInterval(timer);
+  }, [online, stale, askAgain]);
+}

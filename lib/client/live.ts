@@ -99,7 +99,8 @@ class LiveLine {
     const source = new EventSource(EVENTS);
     this.source = source;
     source.onopen = () => {
-      const again = this.wasOpen;
+      // A page opened without a network has missed as much as one whose line broke.
+      const again = this.wasOpen || this.downSince !== null;
       this.wasOpen = true;
       this.retryMs = RETRY_MS.first;
       this.downSince = null;
