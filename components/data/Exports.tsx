@@ -47,7 +47,7 @@ export function Exports() {
         <a href="/api/v1/archive.schema.json" className="underline underline-offset-2">
           JSON Schema
         </a>
-        . Cells of a CSV that a spreadsheet would run begin with a quote; bringing them in takes it off again.
+        . Bottles, must sheets and photos are not in it: a backup holds all there is. Cells of a CSV that a spreadsheet would run begin with a quote; bringing them in takes it off again.
       </p>
     </section>
   );
