@@ -7,11 +7,15 @@ import { CHANGES_CHANNEL, changeSchema, EVERY_CELLAR, type Change } from '../con
 /** Says that something changed, once `transaction` commits; with a rollback nothing is said. It carries no data. Webhooks that asked for it are owed a delivery with it. */
 export async function notifyChange(change: Change, transaction: Transaction): Promise<void> {
   await oweDeliveries(change, transaction);
+  await announce(change, transaction);
+}
+
+async function announce(change: Change, transaction: Transaction): Promise<void> {
   await database().query('select pg_notify($channel, $payload)', { bind: { channel: CHANGES_CHANNEL, payload: JSON.stringify(change) }, transaction });
 }
 
-/** Says that a person's sign-ins, or their place in a cellar, have changed: open streams are looked at again at once. */
-export const notifyAccess = (cellarId: string | null, personId: string, transaction: Transaction) => notifyChange({ cellar: cellarId ?? EVERY_CELLAR, kind: 'member', batch: null, person: personId }, transaction);
+/** Says that a person's sign-ins, or their place in a cellar, have changed: open streams are looked at again at once. It stays within the house. */
+export const notifyAccess = (cellarId: string | null, personId: string, transaction: Transaction) => announce({ cellar: cellarId ?? EVERY_CELLAR, kind: 'member', batch: null, person: personId }, transaction);
 
 /** Hears what changed in any cellar, for as long as the process lives; `onConnect` again after each break, since what was said meanwhile went unheard. */
 export function hearChanges(heard: { onChange(change: Change): void; onConnect(): void; onError(error: unknown): void }): Listener {
