@@ -22,13 +22,20 @@ function parameters(endpoint: Endpoint): unknown[] {
   return [...list(endpoint.params, 'path'), ...list(endpoint.query, 'query')];
 }
 
+/** A personal token does for all but what a person does for themself. */
+function securityOf({ access, by }: Endpoint): Array<Record<string, []>> {
+  if (access === 'anyone') return [];
+  if (access === 'sensor') return [{ sensor: [] }];
+  return access === 'person' || by === 'session' ? [{ session: [] }] : [{ session: [] }, { token: [] }];
+}
+
 function operation(name: string, endpoint: Endpoint): Record<string, unknown> {
   const content = endpoint.response && { content: { 'application/json': { schema: schemaOf(endpoint.response, 'output') } } };
   const refusals = endpoint.access === 'anyone' ? [] : REFUSALS;
   return {
     operationId: name,
     summary: endpoint.summary,
-    security: endpoint.access === 'anyone' ? [] : endpoint.access === 'sensor' ? [{ sensor: [] }] : [{ session: [] }],
+    security: securityOf(endpoint),
     ...(endpoint.access !== 'anyone' && { 'x-access': endpoint.access }),
     parameters: parameters(endpoint),
     ...(endpoint.body && { requestBody: { required: true, content: { 'application/json': { schema: schemaOf(endpoint.body, 'input') } } } }),
@@ -51,6 +58,7 @@ export function openApi(sessionCookie: string): Record<string, unknown> {
       schemas: { Problem: schemaOf(problem, 'output') },
       securitySchemes: {
         session: { type: 'apiKey', in: 'cookie', name: sessionCookie },
+        token: { type: 'http', scheme: 'bearer', description: '`Authorization: Bearer fbt_…`: a personal token, for one cellar and at most its person’s role there' },
         sensor: { type: 'http', scheme: 'bearer', description: '`Authorization: Bearer <sensor>:<secret>`' },
       },
     },
