@@ -40,6 +40,10 @@ export interface BatchEvent {
   fruitG?: number | null;
   volumeL?: number | null;
   gravity?: number | null;
+  /** Standard error of a reading's gravity, points; absent: a hydrometer's 0.7. A refractometer in a fermented drink is off by 2 to 4. */
+  gravitySd?: number | null;
+  /** Of liquid that goes in: its gravity were its alcohol sugar still; absent: `gravity`, which is right for a must. */
+  originalGravity?: number | null;
   neck?: Neck | null;
   /** When this became known; absent: at once. Lets the past be judged by what was known then. */
   knownAt?: Instant | null;

@@ -35,6 +35,9 @@ export const LIMIT_H: Record<Decision, number> = {
   temperature: 6,
 };
 
+/** Hours after a logged racking in which it is not said that it may be racked. */
+const RACKED_LATELY_H = 96;
+
 /** Hours before the truth from which a statement that is already acceptable counts. */
 const EARLY_H = 48;
 
@@ -111,6 +114,14 @@ export class Truths {
     return t < range.minC - margin || t > range.maxC + margin;
   }
 
+  /** Whether a racking was logged so near an hour that nobody needs to be told of another. */
+  private rackedAbout(hour: number): boolean {
+    return this.batch.setup.events.some((event) => {
+      const racked = (event.at - this.batch.setup.pitchedAt!) / 3_600_000;
+      return event.kind === 'rack' && racked > hour - RACKED_LATELY_H && racked < hour + LIMIT_H['ready to rack'];
+    });
+  }
+
   /** Hours at which each statement becomes true; most have one at most. */
   moments(decision: Decision): number[] {
     const one = (hour: number | null): number[] => (hour === null ? [] : [hour]);
@@ -145,7 +156,7 @@ export class Truths {
       case 'terminal':
         return one(this.first(this.lastStretch + 1, (h) => this.remaining(h) <= 1));
       case 'ready to rack':
-        return one(this.first(this.lastStretch + 1, (h) => this.remaining(h) <= 2));
+        return one(this.first(this.lastStretch + 1, (h) => this.remaining(h) <= 2)).filter((hour) => !this.rackedAbout(hour));
       case 'ready to bottle':
         return one(this.first(this.lastStretch + 1, (h) => this.remaining(h) <= 0.5));
       case 'sensor frozen':

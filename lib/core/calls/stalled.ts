@@ -22,7 +22,8 @@ export function stalledCall(scene: Scene): Call {
   const above = pointsWords(level - watch.fgPrior().mean);
   if (watch.stuck.on) {
     const since = sinceOf(scene, watch.stuck.since);
-    const flat = watch.stuck.since === null ? '48 h' : spanWords(48 + hour - watch.stuck.since);
+    const flatSince = watch.flatSince();
+    const flat = spanWords(flatSince === null ? 48 : hour - flatSince);
     const cold = watch.stuckCold;
     return call('yes', `Stopped at ${gravityWords(level)}: flat for ${flat}.`, `${above} above the expected end, ${rate ? rateWords(rate.value) : 'no fall'}.${hint(scene, cold)}`, {
       kind: cold ? 'cold' : 'stuck',
@@ -33,12 +34,12 @@ export function stalledCall(scene: Scene): Call {
     });
   }
   if (watch.sluggish.on) {
-    return call('yes', `Slow: ${rate ? rateWords(rate.value) : 'little fall'}.`, `${above} above the expected end; at this pace more than 6 days to go.${hint(scene, watch.coldNow())}`, {
+    return call('yes', `Slow: ${rate ? rateWords(rate.value) : 'little fall'}.`, `${above} above the expected end; at this pace more than 5 days to go.${hint(scene, watch.coldNow())}`, {
       kind: 'sluggish',
       since: sinceOf(scene, watch.sluggish.since),
       evidence: figures,
       act: 'Check the temperature and keep it in range.',
-      changesIt: 'Changes it: a fall of 2.6 points a day, or less than 6 points to go.',
+      changesIt: 'Changes it: a fall of 2.6 points a day, or less than 5 points to go.',
     });
   }
   if (watch.stuck.run > 0 || (level > top && level <= top + 3 && rate !== null && rate.value < 0.3 && hour > 120)) {

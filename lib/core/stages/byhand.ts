@@ -1,5 +1,6 @@
 import { fitCurve, type CurveFit } from '../fit/map';
 import { curvePrior } from '../fit/priors';
+import { HAND_SD } from './figures';
 import { OVERDUE_H, type Watch } from './watch';
 
 /** A gravity read by hand, or a float that speaks too seldom to be a record. */
@@ -10,8 +11,6 @@ export interface HandReading {
   sd: number;
 }
 
-/** Standard deviation of a hydrometer reading by hand, points (our own). */
-export const HAND_SD = 0.7;
 /** A float that speaks less often than this is read like a hydrometer, h. */
 const SELDOM_H = 2.5;
 /** Pace times age of the end of a ferment that is still acceptable, at the slow side (own simulations: one in ten below). */
@@ -45,7 +44,7 @@ export function handRecord(watch: Watch, hour: number, silent: boolean): HandRec
   const hand = watch.handReadings;
   const newer = hand.length > 0 && hand[hand.length - 1]!.hour > lastFloat;
   if (!seldom && track.bins.n > 0 && !(silent && newer)) return null;
-  const readings: HandReading[] = hand.map((one) => ({ ...one, sd: HAND_SD }));
+  const readings: HandReading[] = hand.map((one) => ({ ...one }));
   if (track.bins.n > 0) readings.push(...floatReadings(watch, seldom));
   const from = watch.segment.from;
   const known = readings.filter((one) => one.hour <= hour && one.hour >= from - 1).sort((a, b) => a.hour - b.hour);

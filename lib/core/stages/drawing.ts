@@ -8,6 +8,8 @@ import type { Watch } from './watch';
 
 const POINTS = 240;
 const Z80 = 1.2816;
+/** Relative doubt of the pace that a stalled batch should have had (ours). */
+const PACE_DOUBT = 0.4;
 
 /** The fitted curve with its forecast, what should have happened after a stall, and the gas: at most 240 points each. */
 export function drawing(watch: Watch, at: Instant, byHand: CurveFit | null): { curve: CurvePoint[]; expected: CurvePoint[]; gas: { at: Instant; value: number }[] } {
@@ -15,7 +17,7 @@ export function drawing(watch: Watch, at: Instant, byHand: CurveFit | null): { c
 }
 
 function curves(watch: Watch, at: Instant, byHand: CurveFit | null): { curve: CurvePoint[]; expected: CurvePoint[] } {
-  const fit = byHand ?? watch.fit();
+  const fit = byHand ?? (watch.stuck.on ? watch.restingFit() : null) ?? watch.fit();
   if (!fit || !(watch.started.on || byHand)) return { curve: [], expected: [] };
   const { track, segment } = watch;
   const now = track.hourOf(at);
@@ -59,17 +61,14 @@ function expectation(watch: Watch, now: number): CurvePoint[] {
   // An exponential ending at the prior, as steep as the peak allows for what is left.
   const pace = Math.max(0.15, Math.min(0.6, watch.maxRate / Math.max(20, watch.segment.effectiveOg)));
   const points: CurvePoint[] = [];
-  const until = now + 72;
+  const until = now + Math.max(72, Math.min(21 * 24, (24 * Math.log(Math.max(1.5, level - mean))) / pace - (now - from)));
   for (let i = 0; i <= 60; i += 1) {
     const hour = from + (i / 60) * (until - from);
     const rest = Math.exp((-pace * (hour - from)) / 24);
     const value = mean + (level - mean) * rest;
-    points.push({
-      at: watch.track.instantOf(hour),
-      gravity: sgOf(value),
-      lo: sgOf(value - Z80 * sd * (1 - rest)),
-      hi: sgOf(value + Z80 * sd * (1 - rest)),
-    });
+    // In doubt are the end and, on the way to it, the pace.
+    const doubt = Math.hypot(sd * (1 - rest), PACE_DOUBT * (level - mean) * rest * pace * ((hour - from) / 24), 0.4);
+    points.push({ at: watch.track.instantOf(hour), gravity: sgOf(value), lo: sgOf(value - Z80 * doubt), hi: sgOf(value + Z80 * doubt) });
   }
   return points;
 }

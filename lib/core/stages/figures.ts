@@ -10,9 +10,13 @@ import { pointsOf } from '../units/convert';
 import { fitSegment } from './curve';
 import { latch } from './latch';
 
+/** Standard deviation of a hydrometer reading by hand, points (our own). */
+export const HAND_SD = 0.7;
 /** Hours between two views of the tail, which hardly changes from look to look. */
 const TAIL_H = 6;
 
+/** Share of the fall that is done when the tail is asked for what is left. */
+const NEAR_END = 0.8;
 /** Share of the fall from which the tail tells of the date, and the share more at which it alone does (own simulations). */
 const TAIL_SPEAKS_FROM = 0.6;
 const TAIL_TAKES_OVER = 0.3;
@@ -61,7 +65,7 @@ export class Figures {
   protected lastAdditionFruit = false;
   /** Sugar went in after the batch had come to rest. */
   sweetened = false;
-  readonly handReadings: { hour: number; points: number }[] = [];
+  readonly handReadings: { hour: number; points: number; sd: number }[] = [];
   lastHand: { hour: number; points: number; miss: number } | null = null;
   frozen: FrozenState | null = null;
 
@@ -197,6 +201,29 @@ export class Figures {
     return fit;
   }
 
+  /** The curve of a batch that ends where it is, for the picture of a stall: the one fitted to the yeast's range leaves the record. */
+  restingFit(): CurveFit | null {
+    const level = this.levelNow();
+    const { segment } = this;
+    if (level === null || segment.effectiveOg < 5) return null;
+    const og: Normal = { mean: segment.level ?? segment.effectiveOg, sd: segment.restarted ? 2 : this.ogSd };
+    return fitSegment(this.setup, this.track, segment, this.lookedAt, { mean: level, sd: 0.7 }, og);
+  }
+
+  /** Hour since which the level has been within a point of the present one; null without a level. */
+  flatSince(): number | null {
+    const now = this.track.level(this.lookedAt - 12, this.lookedAt);
+    if (now === null) return null;
+    let since = this.lookedAt - 12;
+    for (let hour = since; hour > this.segment.from && since - hour < 72; hour -= 6) {
+      const level = this.track.level(hour - 6, hour);
+      if (level === null) continue;
+      if (Math.abs(level - now) > 1) break;
+      since = hour - 6;
+    }
+    return Math.max(since, this.segment.from);
+  }
+
   /** What is still to come by the end of the record alone: three tenths of the age, at least 4 and at most 12 days of it. */
   tail(): Tail | null {
     this.tailCache = this.tailOver(0.3, 288, this.tailCache);
@@ -217,12 +244,16 @@ export class Figures {
     return { at: now, tail: this.track.tail(Math.max(96, Math.min(mostH, share * age)), restarted ? from + 24 : 0, now, age) };
   }
 
-  /** The tail where the fall is near its end; null before. */
+  /** The tail where the fall is near its end; null before, when it takes a steady fall for the whole of it. */
   private tailNow(): Tail | null {
     const level = this.levelNow();
     const line = this.line(48);
-    const ending = level !== null && this.peaked.on && line !== null && -line.slope < 3 && level < this.zoneTop() + 10;
-    return ending ? this.tail() : null;
+    if (level === null || line === null || !this.peaked.on || -line.slope > 3 || level > this.zoneTop() + 10) return null;
+    if (-line.slope > 1) {
+      const fit = this.fit();
+      if (fit && fit.curve.og - level < NEAR_END * (fit.curve.og - fit.curve.fg)) return null;
+    }
+    return this.tail();
   }
 
   /**
@@ -301,11 +332,13 @@ export class Figures {
   /** Present fall, points a day: the shortest window that is sharp enough, blended with the curve. */
   rateNow(): { value: number; sd: number } | null {
     let chosen: Line | null = null;
-    for (const window of [8, 12, 24, 48, 72]) {
+    // At rest there is time to look longer.
+    const rests = this.stuck.on || this.terminal.on;
+    for (const window of rests ? [48, 72] : [8, 12, 24, 48, 72]) {
       const line = this.line(window);
       if (!line) continue;
       chosen = line;
-      if (line.se <= Math.max(0.5, 0.15 * Math.abs(line.slope))) break;
+      if (line.se <= Math.max(rests ? 0.15 : 0.5, 0.15 * Math.abs(line.slope))) break;
     }
     if (!chosen) return null;
     const fit = this.started.on && !this.stuck.on ? this.fit() : null;

@@ -2,7 +2,7 @@ import type { BatchEvent, BatchSetup, Instant, Reading } from '../types';
 import { POINTS_PER_G_PER_L } from '../gravity/extract';
 import { median } from '../series/order';
 import { pointsOf } from '../units/convert';
-import { Figures } from './figures';
+import { Figures, HAND_SD } from './figures';
 import { clear } from './latch';
 
 /** Hours between two looks. The grid is anchored at the pitch, so that shifting all times shifts all answers. */
@@ -63,17 +63,17 @@ export class Intake extends Figures {
         break;
       case 'reading':
       case 'note':
-        if (event.gravity) this.pinTo(hour, pointsOf(event.gravity));
+        if (event.gravity) this.pinTo(hour, pointsOf(event.gravity), Math.max(HAND_SD, event.gravitySd ?? HAND_SD));
         break;
     }
   }
 
-  private pinTo(hour: number, points: number): void {
-    this.handReadings.push({ hour, points });
+  private pinTo(hour: number, points: number, sd: number): void {
+    this.handReadings.push({ hour, points, sd });
     if (this.og === null && hour < 24) {
       this.og = points;
-      this.ogSd = 1;
-      this.segment = { ...this.segment, effectiveOg: points, level: points, ogSd: 1 };
+      this.ogSd = Math.max(1, sd);
+      this.segment = { ...this.segment, effectiveOg: points, level: points, ogSd: this.ogSd };
     }
     const raw = this.track.level(hour - 4, hour + 2) ?? this.track.level(hour - 12, hour + 1);
     if (raw === null) {
@@ -83,7 +83,7 @@ export class Intake extends Figures {
     if (this.lastHand) this.track.loosen((hour - this.lastHand.hour) / 24);
     else if (hour > 24) this.track.loosen(hour / 24);
     const line = this.track.line(hour - 12, hour + 1);
-    const slack = 0.7 + (line ? Math.abs(line.slope) * 0.08 : 0.3);
+    const slack = sd + (line ? Math.abs(line.slope) * 0.08 : 0.3);
     const miss = this.track.pin(raw, points, slack);
     this.lastHand = { hour, points, miss };
     this.recordChanged();
@@ -103,7 +103,8 @@ export class Intake extends Figures {
     if (event.volumeL) {
       const share = event.volumeL / (volume + event.volumeL);
       const other = event.gravity ? pointsOf(event.gravity) : 0;
-      effective += share * (other - effective);
+      const otherOg = event.originalGravity ? pointsOf(event.originalGravity) : other;
+      effective += share * (otherOg - effective);
       if (level !== null) level += share * (other - level);
     }
     this.restart(hour, effective, level, Boolean(event.fruitG));

@@ -8,7 +8,7 @@ export { LOOK_H } from './intake';
 
 /** Points that may still come, nine times in ten, when a batch may be racked, when it is called finished, and when it may be bottled. */
 export const RACK_POINTS = 3.9;
-export const TERMINAL_POINTS = 1.7;
+export const TERMINAL_POINTS = 1.6;
 export const BOTTLE_POINTS = 1.0;
 /** Hours after the pitch at which a start is overdue. */
 export const OVERDUE_H: Record<BatchSetup['kind'], number> = { beer: 48, cider: 72, mead: 72, wine: 72 };

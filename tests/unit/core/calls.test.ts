@@ -109,6 +109,45 @@ describe('the calls', () => {
     }
   });
 
+  it('count the days that a stalled batch has really been flat', () => {
+    const stopped = (day: number): number => Math.max(24, cider(day));
+    let stop = 0;
+    while (cider(stop) > 24) stop += 0.25;
+    const { stalled } = at(stop + 6, record(stop + 6, stopped)).calls;
+    expect(stalled.headline).toMatch(/flat for 6 days\.$/);
+  });
+
+  it('show no pace of a batch that has stopped', () => {
+    const stopped = (day: number): number => Math.max(24, cider(day));
+    for (const day of [14, 15, 16, 18]) expect(Math.abs(at(day, record(day, stopped)).ratePointsPerDay!.value)).toBeLessThan(0.4);
+  });
+
+  it('follow the record of a stalled batch with its curve, and show what should have come with room for doubt', () => {
+    const stopped = (day: number): number => Math.max(24, cider(day));
+    const { curve, expected } = assess(setup, record(16, stopped), PITCH + 16 * DAY);
+    const here = curve.filter((point) => point.at <= PITCH + 16 * DAY && point.at > PITCH + 12 * DAY);
+    for (const point of here) expect(Math.abs(1000 * (point.gravity - 1.024))).toBeLessThan(2);
+    expect(expected.at(-1)!.gravity).toBeLessThan(1.006);
+    for (const point of expected) expect(point.hi - point.lo).toBeGreaterThan(0.0009);
+  });
+
+  it('take the strength of a drink that tops up for what it was, not for water', () => {
+    const topUp = { at: PITCH + 20 * DAY, kind: 'top_up' as const, volumeL: 1.5, gravity: 1.0 };
+    const plain = at(22, record(22, cider), { events: [topUp] });
+    const strong = at(22, record(22, cider), { events: [{ ...topUp, originalGravity: 1.075 }] });
+    expect(strong.abvPercent! - plain.abvPercent!).toBeGreaterThan(1.5);
+  });
+
+  it('call it racked and bottled after a float that stuck, from the record on both sides of the gap', () => {
+    const frozen = record(40, cider).map((reading) => {
+      const day = (reading.at - PITCH) / DAY;
+      return day > 16 && day < 20 ? { ...reading, gravity: 1 + cider(16) / 1000 + 1e-5 * Math.sin(reading.at) } : reading;
+    });
+    const { sensor, rack } = at(22.5, frozen).calls;
+    expect(sensor.kind).not.toBe('frozen');
+    expect(rack.verdict).toBe('yes');
+  });
+
   it('know nothing before the pitch is told', () => {
     const { calls, stage } = at(3, record(3, cider), { pitchedAt: null });
     expect(stage).toBe('unknown');
@@ -136,6 +175,12 @@ describe('hydrometer readings alone', () => {
     const late = at(29, [], { events }).calls;
     expect(late.rack.verdict).toBe('yes');
     expect(late.bottle.verdict).toBe('yes');
+  });
+
+  it('do not bottle by readings that may be off by 3 points', () => {
+    const rough = events.map((event) => ({ ...event, gravitySd: 3 }));
+    expect(at(29, [], { events }).calls.bottle.verdict).toBe('yes');
+    expect(at(29, [], { events: rough }).calls.bottle.verdict).not.toBe('yes');
   });
 
   it('ask for the reading that would settle it', () => {
