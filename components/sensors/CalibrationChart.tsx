@@ -4,7 +4,7 @@ import { useId, useRef } from 'react';
 import { useWidth } from '@/components/ui/width';
 import { feltAt } from '@/lib/core/calibration/apply';
 import type { CalibrationFit, CalibrationPoint } from '@/lib/core/calibration/calibrate';
-import { curvePaths, degreesScale, pictureWords, placed, scaleOf } from './calibration-picture';
+import { curvePaths, degreesScale, pictureWords, placed, scaleOf, withRoom } from './calibration-picture';
 import { signedPoints } from './words';
 
 const LEFT = 62;
@@ -32,6 +32,7 @@ export function CalibrationChart({ points, fit, correctsTemperature }: { points:
   const restTop = HEIGHT + 26;
   const r = placed({ from: -limit, to: limit, ticks: [] }, restTop + REST - 30, restTop);
   const paths = fit && curvePaths(fit, x, y);
+  const labelled = withRoom(points.map((point) => x(point.inclination)), 46);
   return (
     <div ref={frame} className="min-w-0">
       <svg width={width} height={HEIGHT + 26 + REST} role="img" aria-label={fit ? pictureWords(fit) : `${points.length} points, no curve`} className="block font-mono" fontSize="12" fontWeight="500">
@@ -61,12 +62,14 @@ export function CalibrationChart({ points, fit, correctsTemperature }: { points:
           </>
         )}
         <path d={`M${LEFT} ${HEIGHT - 4}H${width - RIGHT}`} stroke="var(--ink)" strokeWidth="1.5" />
-        {points.map((point) => (
+        {points.map((point, index) => (
           <g key={point.id}>
             <circle cx={x(point.inclination)} cy={y(known(point))} r="5.5" fill="var(--sheet)" stroke={point.used ? 'var(--ink)' : 'var(--ink3)'} strokeWidth="1.6" strokeDasharray={point.used ? undefined : '2.4 2.2'} />
-            <text x={x(point.inclination) - 8} y={y(known(point)) - 9} textAnchor={x(point.inclination) > LEFT + 60 ? 'end' : 'start'} fill={point.used ? 'var(--ink)' : 'var(--ink3)'}>
-              {point.gravity.toFixed(3)}
-            </text>
+            {labelled[index] && (
+              <text x={x(point.inclination) - 8} y={y(known(point)) - 9} textAnchor={x(point.inclination) > LEFT + 60 ? 'end' : 'start'} fill={point.used ? 'var(--ink)' : 'var(--ink3)'}>
+                {point.gravity.toFixed(3)}
+              </text>
+            )}
           </g>
         ))}
         {fit && (

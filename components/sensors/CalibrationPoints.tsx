@@ -24,10 +24,10 @@ export function CalibrationPoints({ points, fit, mayChange, onUse, onRemove }: {
       <thead>
         <tr className="type-label border-b-[1.5px] border-ink text-left text-ink2">
           <th className="py-1.5 pl-(--margin) font-medium">in</th>
-          <th className="py-1.5 text-right font-medium">known</th>
-          <th className="py-1.5 text-right font-medium">leans</th>
-          <th className="py-1.5 text-right font-medium max-strip:hidden">at</th>
-          <th className="py-1.5 text-right font-medium">left over</th>
+          <th className="py-1.5 pl-3 text-right font-medium">known</th>
+          <th className="py-1.5 pl-3 text-right font-medium">leans</th>
+          <th className="py-1.5 pl-3 text-right font-medium max-strip:hidden">at</th>
+          <th className="py-1.5 pl-3 text-right font-medium">left over</th>
           <th className="py-1.5 pr-(--margin) text-right font-medium">
             <span className="heard-only">strike out</span>
           </th>
@@ -49,13 +49,13 @@ export function CalibrationPoints({ points, fit, mayChange, onUse, onRemove }: {
                   </span>
                 </span>
               </td>
-              <td className="py-1.5 text-right font-semibold">{point.gravity.toFixed(3)}</td>
-              <td className="py-1.5 text-right">{point.inclination.toFixed(1)}°</td>
-              <td className="py-1.5 text-right max-strip:hidden">{point.temperature.toFixed(0)} °C</td>
-              <td className="py-1.5 text-right" title={result?.missedBy == null ? undefined : `without it the curve would miss it by ${signedPoints(result.missedBy)} points`}>
+              <td className="whitespace-nowrap py-1.5 pl-3 text-right font-semibold">{point.gravity.toFixed(3)}</td>
+              <td className="whitespace-nowrap py-1.5 pl-3 text-right">{point.inclination.toFixed(1)}°</td>
+              <td className="whitespace-nowrap py-1.5 pl-3 text-right max-strip:hidden">{point.temperature.toFixed(0)} °C</td>
+              <td className="whitespace-nowrap py-1.5 pl-3 text-right" title={result?.missedBy == null ? undefined : `without it the curve would miss it by ${signedPoints(result.missedBy)} points`}>
                 {result ? signedPoints(result.leftOver) : '–'}
               </td>
-              <td className="py-1 pr-(--margin) text-right">
+              <td className="py-1 pl-3 pr-(--margin) text-right">
                 {mayChange && (
                   <Button size="lane" look="quiet" aria-label={`Strike out ${point.gravity.toFixed(3)} at ${point.inclination.toFixed(1)} degrees`} onClick={() => onRemove(point.id)}>
                     ×

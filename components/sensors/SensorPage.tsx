@@ -93,8 +93,8 @@ export function SensorPage({ id, doors }: { id: string; doors: Doors }) {
       >
         {may('sensors.manage') && <OnOff sensor={sensor} />}
       </PageHead>
-      <div className="flex flex-col wide:grid wide:grid-cols-[minmax(0,1fr)_424px]">
-        <div className="min-w-0 max-wide:order-2">
+      <div className="flex flex-col wide:grid wide:grid-cols-[minmax(0,1fr)_424px] wide:grid-rows-[auto_1fr]">
+        <div className="min-w-0 max-wide:order-2 wide:row-span-2">
           {sensor.kind === 'float' ? <Calibration sensor={sensor} mayChange={may('sensors.calibrate')} now={now} timeZone={timeZone} /> : <ProbeReadings sensor={sensor} now={now} timeZone={timeZone} />}
           <Stays id={id} timeZone={timeZone} />
           <RefusedReasons id={id} />
@@ -105,6 +105,8 @@ export function SensorPage({ id, doors }: { id: string; doors: Doors }) {
           <Health sensor={sensor} now={now} timeZone={timeZone} />
           <GroupBar word="Vessel" />
           <Placement sensor={sensor} mayAssign={may('sensors.assign')} timeZone={timeZone} now={now} />
+        </div>
+        <div className="max-wide:order-3 wide:col-start-2 wide:border-l">
           {may('sensors.manage') && (
             <>
               <GroupBar word="Settings sent down" />

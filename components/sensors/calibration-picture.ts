@@ -51,3 +51,16 @@ export function pictureWords(fit: CalibrationFit): string {
   const points = (gravity: number) => `${(gravity * 1000).toFixed(1)} points`;
   return `Curve of degree ${fit.degree} through ${fit.points.length} points from ${fit.gravityLow.toFixed(3)} at ${fit.low.toFixed(1)}° to ${fit.gravityHigh.toFixed(3)} at ${fit.high.toFixed(1)}°; largest left over ${points(Math.max(...fit.points.map((point) => Math.abs(point.leftOver))))}.`;
 }
+
+/** Which labels have room: from the left, each at least so far from the last one shown, px. */
+export function withRoom(places: readonly number[], apart: number): boolean[] {
+  let last = -Infinity;
+  const order = places.map((place, index) => ({ place, index })).sort((a, b) => a.place - b.place);
+  const shown = places.map(() => false);
+  for (const { place, index } of order) {
+    if (place - last < apart) continue;
+    shown[index] = true;
+    last = place;
+  }
+  return shown;
+}
