@@ -61,8 +61,9 @@ export const temperatureSpan = (celsius: number, units = chosen): number => (uni
 export function volumeText(litres: number, digits?: number, units = chosen): string {
   const { name, litres: per } = VOLUMES[units.volume];
   const value = litres / per;
-  // A gallon is about four litres: one more decimal says as much.
-  return `${Number(value.toFixed((digits ?? (litres < 10 ? 2 : 1)) + (units.volume === 'l' ? 0 : 1)))} ${name}`;
+  const asked = digits ?? (litres < 10 ? 2 : 1);
+  // A gallon is about four litres: two decimals are a wine glass.
+  return `${Number(value.toFixed(units.volume === 'l' ? asked : 2))} ${name}`;
 }
 
 /** A gravity in a sentence: three decimals between 0.970 and 1.200, perhaps with its doubt. */
