@@ -46,7 +46,7 @@ export function AskForLink() {
       <Choice label="for what" value={kind} onChoose={setKind} options={KINDS} />
       <Field label="e-mail" type="email" name="email" autoComplete="username" inputMode="email" autoCapitalize="none" spellCheck={false} autoFocus tall value={email} error={fields.email} onChange={(event) => setEmail(event.target.value)} />
       {failed && Object.keys(fields).length === 0 && <FormError>{failed}</FormError>}
-      <Button type="submit" look="first" size="tall" disabled={busy || email.trim() === ''}>
+      <Button type="submit" look="first" size="tall" disabled={busy}>
         Send the link
       </Button>
       <Link href="/sign-in" className="type-body text-ink2 underline underline-offset-4">

@@ -124,6 +124,8 @@ describe('the ways in', () => {
     const { page, context, complaints } = await browser.visit();
     await page.goto(`${house.web.url}/sign-in`);
     await page.getByRole('link', { name: 'Have a link mailed' }).click();
+    // The page before has such a field too.
+    await page.getByRole('heading', { name: 'Have a link mailed' }).waitFor();
     await page.getByLabel('e-mail').fill('wren@loft.example');
     await page.getByRole('button', { name: 'Send the link' }).click();
     await page.getByText('If wren@loft.example has an account').waitFor();
@@ -183,6 +185,7 @@ describe('the ways in', () => {
     const secret = (await section.locator('p.font-mono').innerText()).replaceAll(' ', '');
     await section.getByLabel('the code it shows').fill(new TOTP({ secret }).generate());
     await section.getByRole('button', { name: 'Turn it on' }).click();
+    await page.getByRole('heading', { name: 'Ten recovery codes, shown this once' }).waitFor();
     const codes = await page.getByRole('region', { name: 'Recovery codes' }).getByRole('listitem').allInnerTexts();
     expect(codes).toHaveLength(10);
     await page.getByText('I have kept them.').click();
