@@ -66,10 +66,15 @@ function ProfileForm({ person }: { person: MeBody['person'] }) {
   );
 }
 
-/** Units are taken at once: one sees them in the sentence below. */
-function Units({ units }: { units: MeBody['person']['units'] }) {
+/** Units are taken at once, without a button. */
+function Units({ kept }: { kept: MeBody['person']['units'] }) {
   const { failed, act } = useAct();
-  const choose = (change: Partial<MeBody['person']['units']>) => void act(() => updateMe({ units: change }));
+  // Shown at once; taken back where it was not kept.
+  const [units, setUnits] = useState(kept);
+  const choose = (change: Partial<MeBody['person']['units']>) => {
+    setUnits({ ...units, ...change });
+    void act(() => updateMe({ units: change })).then((done) => !done && setUnits(units));
+  };
   return (
     <div className="flex flex-col gap-3 border-b px-(--margin) py-4">
       <div className="flex flex-wrap gap-x-6 gap-y-3">
@@ -101,7 +106,7 @@ export function Profile() {
       </section>
       <section aria-label="Units">
         <GroupBar word="Units" note="on every screen of yours" />
-        <Units units={me.person.units} />
+        <Units key={me.person.id} kept={me.person.units} />
       </section>
       <section aria-label="Messages">
         <GroupBar word="Messages" />
