@@ -64,6 +64,21 @@ export function bottleCall(scene: Scene): Call {
       changesIt,
     });
   }
+  if (watch.sweetStill(level)) {
+    return call('hold', 'Do not bottle: the sugar that went in is still there.', `${gravityWords(level)}, and nothing keeps the yeast from it.`, {
+      since: sinceOf(scene, watch.lastAddition),
+      evidence: figures,
+      act: 'Stabilise it and log that, or wait until it has worked out.',
+      changesIt,
+    });
+  }
+  if (watch.mayOnlyBeCold() && rate !== null && rate.value < 0.3 && level <= top) {
+    return call('no', 'Not yet: it may only be the cold.', `${gravityWords(level)} and level since it turned cold.`, {
+      evidence: figures,
+      act: 'Let it warm into its range for three days, then look again.',
+      changesIt: 'Changes it: the same gravity once it is warm.',
+    });
+  }
   const hours = hoursToBottle(scene);
   const expectedAt = hours === null ? null : later(scene, hours);
   if (expectedAt !== null && hours !== null && hours <= 96 && watch.terminal.on) {

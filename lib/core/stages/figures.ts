@@ -65,6 +65,8 @@ export class Figures {
   protected lastAdditionFruit = false;
   /** Sugar went in after the batch had come to rest. */
   sweetened = false;
+  /** Level at which it rested before it was sweetened, points. */
+  protected restedAt: number | null = null;
   readonly handReadings: { hour: number; points: number; sd: number }[] = [];
   lastHand: { hour: number; points: number; miss: number } | null = null;
   frozen: FrozenState | null = null;
@@ -249,7 +251,7 @@ export class Figures {
     const level = this.levelNow();
     const line = this.line(48);
     if (level === null || line === null || !this.peaked.on || -line.slope > 3 || level > this.zoneTop() + 10) return null;
-    if (-line.slope > 1) {
+    if (-line.slope > 1 || level > this.zoneTop()) {
       const fit = this.fit();
       if (fit && fit.curve.og - level < NEAR_END * (fit.curve.og - fit.curve.fg)) return null;
     }
@@ -350,6 +352,11 @@ export class Figures {
     const change = curved - pace(chosen.middle);
     const rate = -chosen.slope + change;
     return held({ value: rate, sd: Math.hypot(chosen.se, 0.12 * rate, 0.5 * change) }, { value: curved, sd: 0.25 * curved + 0.3 });
+  }
+
+  /** Whether sugar that went in after the batch had come to rest is still there, and nothing keeps the yeast from it. */
+  sweetStill(level: number): boolean {
+    return this.sweetened && !this.stabilised && this.restedAt !== null && level > this.restedAt + 2;
   }
 
   quietSinceAddition(hours: number, fruitHours: number): boolean {

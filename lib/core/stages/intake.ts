@@ -94,6 +94,7 @@ export class Intake extends Figures {
     let effective = this.segment.effectiveOg || (this.og ?? 0);
     let level = this.track.level(hour - 6, hour);
     level = level === null ? null : this.track.calibrate(level);
+    if (this.terminal.on || this.bottle.on) this.restedAt = level;
     if (event.sugarG) {
       const points = (POINTS_PER_G_PER_L * event.sugarG) / volume;
       effective += points;

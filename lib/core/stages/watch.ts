@@ -9,7 +9,7 @@ export { LOOK_H } from './intake';
 /** Points that may still come, nine times in ten, when a batch may be racked, when it is called finished, and when it may be bottled. */
 export const RACK_POINTS = 3.9;
 export const TERMINAL_POINTS = 1.6;
-export const BOTTLE_POINTS = 1.0;
+export const BOTTLE_POINTS = 0.95;
 /** Hours after the pitch at which a start is overdue. */
 export const OVERDUE_H: Record<BatchSetup['kind'], number> = { beer: 48, cider: 72, mead: 72, wine: 72 };
 
@@ -21,6 +21,8 @@ export class Watch extends Intake {
   private noise = 0.5;
   /** Hour of the last look at which it was cold. */
   private lastCold: number | null = null;
+  /** Hour since which it has been cold, with no warm days between. */
+  private coldSince = 0;
 
   /** Takes in what was measured before `hour` and applies every rule once. */
   look(hour: number, readings: Reading[]): void {
@@ -34,6 +36,7 @@ export class Watch extends Intake {
   private judge(): void {
     const hour = this.lookedAt;
     this.judgeStart(hour);
+    this.noteCold(hour);
     if (this.started.on && !this.frozen) {
       this.noteLowest();
       this.judgePeak(hour);
@@ -49,6 +52,18 @@ export class Watch extends Intake {
     if (this.lastHand && Math.abs(this.lastHand.miss) > 4 && hour - this.lastHand.hour < 168 && this.lastHand.hour > 12) {
       hold(this.drifting, hour, true, 1, false);
     }
+  }
+
+  private noteCold(hour: number): void {
+    if (!this.started.on || !this.coldNow()) return;
+    if (this.lastCold === null || hour - this.lastCold > WARMING_H) this.coldSince = hour;
+    this.lastCold = hour;
+  }
+
+  /** It is cold, or was lately, and had not come to its end before: what rests may only wait for warmth. */
+  mayOnlyBeCold(): boolean {
+    if (this.lastCold === null || this.lookedAt - this.lastCold > WARMING_H) return false;
+    return !this.terminal.on || this.terminal.since === null || this.terminal.since > this.coldSince;
   }
 
   private judgeStart(hour: number): void {
@@ -114,7 +129,6 @@ export class Watch extends Intake {
     }
     const limit = this.swapGas();
     // A cold vessel with sugar left is quiet only until somebody warms it.
-    if (this.coldNow()) this.lastCold = hour;
     const waiting = this.lastCold !== null && hour - this.lastCold < WARMING_H && this.gasIfWarmed() > limit;
     // Fresh sugar is not at its strongest at once, and yeast that had come to rest wakes slowly.
     const settled = this.quietSinceAddition(this.sweetened ? 72 : 24, 72);
@@ -162,6 +176,8 @@ export class Watch extends Intake {
       this.againstRange(level, rest).most < BOTTLE_POINTS &&
       !this.rising.on &&
       !this.refermenting.on &&
+      !this.sweetStill(level) &&
+      !this.mayOnlyBeCold() &&
       this.quietSinceAddition(120, 168);
     hold(this.bottle, hour, still, 4, (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on);
   }

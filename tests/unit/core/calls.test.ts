@@ -87,6 +87,23 @@ describe('the calls', () => {
     expect(calls.bottle).toMatchObject({ verdict: 'hold', kind: 'refermentation' });
   });
 
+  it('do not bottle a batch that was sweetened at rest and lies still, unless it was stabilised', () => {
+    const events: BatchEvent[] = [{ at: PITCH + 30 * DAY, kind: 'addition', sugarG: 60 }];
+    const sweet = (day: number): number => (day < 30 ? cider(day) : cider(day) + 5.2);
+    const readings = record(44, sweet);
+    expect(at(44, readings, { events }).calls.bottle).toMatchObject({ verdict: 'hold', headline: 'Do not bottle: the sugar that went in is still there.' });
+    const held: BatchEvent[] = [...events, { at: PITCH + 29 * DAY, kind: 'stabilise' }];
+    expect(at(44, readings, { events: held }).calls.bottle.verdict).toBe('yes');
+  });
+
+  it('do not bottle what only the cold has stopped, though it lies within its range', () => {
+    const stopped = (day: number): number => Math.max(3, cider(day));
+    let stop = 0;
+    while (cider(stop) > 3) stop += 0.25;
+    expect(at(stop + 7, record(stop + 7, stopped)).calls.bottle.verdict).toBe('yes');
+    expect(at(stop + 7, record(stop + 7, stopped, (day) => (day < stop - 0.5 ? 19 : 9))).calls.bottle.verdict).not.toBe('yes');
+  });
+
   it('say that the sensor is silent, and that they do not know', () => {
     const { calls } = at(6, record(5, cider));
     expect(calls.sensor).toMatchObject({ verdict: 'yes', kind: 'silent' });
