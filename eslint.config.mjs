@@ -10,7 +10,7 @@ const pureCore = [
 ];
 
 const config = [
-  { ignores: ['node_modules/**', '.next*/**', '.data/**', 'next-env.d.ts', 'coverage/**', 'out/**'] },
+  { ignores: ['node_modules/**', '**/.next*/**', '.data/**', 'next-env.d.ts', 'coverage/**', 'out/**'] },
   ...next,
   ...nextTypescript,
   {
