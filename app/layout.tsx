@@ -15,7 +15,7 @@ export const metadata: Metadata = {
   title: { default: 'Fallbright', template: '%s · Fallbright' },
   description: 'The watch kept over small fermentations until they fall bright.',
   robots: { index: false, follow: false },
-  icons: { apple: '/apple-touch-icon.png' },
+  icons: { icon: '/icon.svg', apple: '/apple-touch-icon.png' },
   appleWebApp: { capable: true, title: 'Fallbright', statusBarStyle: 'default' },
 };
 

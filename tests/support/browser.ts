@@ -40,7 +40,7 @@ export function useBrowser() {
     page.setDefaultTimeout(20_000);
     const complaints: string[] = [];
     page.on('console', (message) => {
-      if (message.type() === 'error') complaints.push(message.text());
+      if (message.type() === 'error') complaints.push(`${message.text()} ${message.location().url}`.trim());
     });
     page.on('pageerror', (error) => complaints.push(error.message));
     return { context, page, complaints };
