@@ -6,6 +6,9 @@ import type { EntryBody } from '@/lib/contracts/batches';
 import type { Stopped } from '@/lib/client/unsent/send';
 import type { Unsent } from '@/lib/client/unsent/store';
 
+/** What is this new needs no word while the line is up. */
+const SLOW_MS = 90_000;
+
 const notes = (count: number) => (count === 1 ? '1 note waits' : `${count} notes wait`);
 
 export interface BarWords {
@@ -39,7 +42,7 @@ export function barWords({ offlineSince, keptSince, waiting, refused, stopped, n
     const strong = asOf === null ? `Offline since ${clock(offlineSince / 1000, timeZone)}.` : `Offline. Shown as of ${asOf}.`;
     return { strong, rest: `${asOf === null ? 'Showing what was known then. ' : ''}It catches up by itself.${wait}${no}`, link: about, tone: 'away' };
   }
-  if (asOf !== null) return { strong: `Shown as of ${asOf}.`, rest: `The network is slow; it catches up by itself.${wait}${no}`, link: about, tone: 'away' };
+  if (asOf !== null && now - keptSince! > SLOW_MS) return { strong: `Shown as of ${asOf}.`, rest: `The network is slow; it catches up by itself.${wait}${no}`, link: about, tone: 'away' };
   if (waiting > 0 && stopped === 'signed-out') return { strong: `${notes(waiting)} on this device.`, rest: 'Sign in again and they are sent.', link: { href: '/sign-in', word: 'Sign in' }, tone: 'mind' };
   if (waiting > 0) return { strong: `${notes(waiting)} to be sent.`, rest: `The server is asked again in a moment.${no}`, link: about, tone: 'mind' };
   return refused.length > 0 ? { strong: no.trim(), rest: 'It is still on this device, with what was wrong.', link: about, tone: 'mind' } : null;

@@ -1,4 +1,4 @@
-import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest';
 import { Alert, type Batch } from '@/db/models';
 import { keepTakeLinks } from '@/db/queries/take-links';
 import { choicesOf, messageTimesOf, ruleSettingsOf } from '@/db/queries/messages';
@@ -6,7 +6,7 @@ import { mutesOf } from '@/db/queries/mutes';
 import { hashLinkToken, linkTokenOf } from '@/lib/auth/link-tokens';
 import type { Call } from '@/lib/core/types';
 import { randomUUID } from 'node:crypto';
-import { expectAccessible, expectNoSidewaysScroll, useBrowser } from '../support/browser';
+import { expectAccessible, expectNoSidewaysScroll, useBrowser, type Visit } from '../support/browser';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildCellar, buildMember } from '../support/factories';
 import { until } from '../support/processes';
@@ -14,6 +14,10 @@ import { startWeb, type Web } from '../support/web';
 
 const db = useDatabase();
 const browser = useBrowser();
+/** An open page holds its event stream, and with it the server, for as long as it stands. */
+const visits: Visit[] = [];
+const visitAs = async (...given: Parameters<typeof browser.visitAs>) => held(await browser.visitAs(...given));
+const held = (visit: Visit) => (visits.push(visit), visit);
 let web: Web;
 let una: Awaited<ReturnType<typeof buildMember>>;
 let batch: Batch;
@@ -27,12 +31,15 @@ beforeAll(async () => {
   batch = await buildBatch({ cellarId, name: 'Oat stout', tag: 5, pitchedAt: new Date(Date.now() - 86_400_000) });
 }, 700_000);
 afterAll(() => web?.stop());
+afterEach(() => Promise.all(visits.splice(0).map(({ context }) => context.close())));
 
 const openAlert = () => Alert.create({ cellarId: una.cellarId, batchId: batch.id, call: 'stalled', kind: 'stuck', level: 'check', state: 'open', since: new Date(), openedAt: new Date(), evidence: EVIDENCE });
 
 describe('the page of messages', () => {
   it('keeps quiet hours, a choice, a rule and who waits, and is for every hand and eye', async () => {
-    const { page, context, complaints } = await browser.visitAs(una.personId, web.url);
+    const { page, complaints } = await visitAs(una.personId, web.url);
+    const missing: string[] = [];
+    page.on('response', (response) => response.status() >= 400 && missing.push(`${response.status()} ${response.url()}`));
     await page.goto(`${web.url}/settings/messages`);
     await page.getByRole('heading', { name: 'Ready to rack' }).waitFor();
     await page.getByRole('button', { name: 'Keep some' }).click();
@@ -56,19 +63,18 @@ describe('the page of messages', () => {
 
     await expectAccessible(page);
     await expectNoSidewaysScroll(page);
+    expect(missing).toEqual([]);
     expect(complaints).toEqual([]);
-    await context.close();
-    const phone = await browser.visitAs(una.personId, web.url, { phone: true, night: true });
+    const phone = await visitAs(una.personId, web.url, { phone: true, night: true });
     await phone.page.goto(`${web.url}/settings/messages`);
     await phone.page.getByRole('heading', { name: 'Ready to rack' }).waitFor();
     await expectAccessible(phone.page);
     await expectNoSidewaysScroll(phone.page);
-    await phone.context.close();
   });
 
   it('mutes a vessel from its alert, and says so there and on its page', async () => {
     const alert = await openAlert();
-    const { page, context } = await browser.visitAs(una.personId, web.url);
+    const { page } = await visitAs(una.personId, web.url);
     await page.goto(`${web.url}/alerts?alert=${alert.id}`);
     await page.getByRole('button', { name: 'Mute this vessel' }).click();
     await page.getByRole('button', { name: '2 h', exact: true }).click();
@@ -80,7 +86,6 @@ describe('the page of messages', () => {
     await page.getByRole('button', { name: 'Mute this vessel' }).waitFor();
     expect(await mutesOf(una.cellarId, new Date())).toEqual([]);
     await alert.destroy();
-    await context.close();
   });
 });
 
@@ -90,7 +95,7 @@ describe('the page behind a mailed link', () => {
     const id = randomUUID();
     const token = linkTokenOf('take', id);
     await keepTakeLinks([{ id, alertId: alert.id, personId: una.personId, tokenHash: hashLinkToken(token) }], new Date(Date.now() + 3_600_000));
-    const { page, context } = await browser.visit({ phone: true });
+    const { page } = held(await browser.visit({ phone: true }));
     await page.goto(`${web.url}/take/${token}`);
     await page.getByRole('heading', { name: /Stopped at\s+1\.041/ }).waitFor();
     await expectAccessible(page);
@@ -102,13 +107,11 @@ describe('the page behind a mailed link', () => {
     await page.reload();
     await page.getByText('Una Thorne has it.').waitFor();
     expect(await page.getByRole('button', { name: 'I have it' }).count()).toBe(0);
-    await context.close();
   });
 
   it('says in a sentence that a made-up link opens nothing', async () => {
-    const { page, context } = await browser.visit();
+    const { page } = held(await browser.visit());
     await page.goto(`${web.url}/take/${'x'.repeat(32)}`);
     await page.getByText('This link no longer opens anything').waitFor();
-    await context.close();
   });
 });

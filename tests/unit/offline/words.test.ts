@@ -26,6 +26,10 @@ describe('the bar under the header', () => {
     expect(said(given)).toBe(sentence);
   });
 
+  it('says nothing of a slow network while what is shown is as good as new', () => {
+    expect(barWords({ ...facts, keptSince: NOW - 60_000 })).toBeNull();
+  });
+
   it('leads to the batch whose note was not taken', () => {
     expect(barWords({ ...facts, refused: [{ batchId: 'b1' }] })?.link).toEqual({ href: '/batches/b1', word: 'Look at it' });
   });
