@@ -66,3 +66,18 @@ describe('sugar that is reckoned from what was weighed', () => {
     expect(await Entry.findByPk(entry.id)).toMatchObject({ sugarG: null, fruitG: null });
   });
 });
+
+describe('a hydrometer in a drink with alcohol', () => {
+  it('is corrected for how that drink widens, more than for the must it was', async () => {
+    const brewer = await buildMember('brewer');
+    const working = await buildBatch({ cellarId: brewer.cellarId, pitchedAt: new Date(NOON - 720 * HOUR), originalGravity: 1.1 });
+    const unpitched = await buildBatch({ cellarId: brewer.cellarId, pitchedAt: null, originalGravity: 1.1 });
+    const cold = log({ kind: 'reading', gravity: 0.998, temperature_c: 10 });
+    const inDrink = (await createEntry(brewer, working.id, cold, clock)).gravity!;
+    const asMust = (await createEntry(brewer, unpitched.id, cold, clock)).gravity!;
+    // Cold makes the drink denser than it is at 20 °C; with 13 % of alcohol by 0.0003 to 0.0006 more than sugar water.
+    expect(inDrink).toBeLessThan(asMust);
+    expect(asMust - inDrink).toBeGreaterThan(0.0002);
+    expect(asMust - inDrink).toBeLessThan(0.0007);
+  });
+});

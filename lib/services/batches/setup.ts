@@ -12,13 +12,14 @@ export type EntryFacts = Pick<Entry, 'kind' | 'at' | 'gravity' | 'volumeL' | 'su
 /** What goes in by the gram and feeds nothing. An enzyme may make new sugar, and fresh yeast may go on: they count as additions. */
 const INERT: ReadonlySet<string> = new Set<(typeof SUBSTANCES)[number]>(['nutrient', 'acid', 'chalk', 'tannin', 'sulphite', 'sorbate', 'fining', 'spice']);
 
+/** Points that a gravity reckoned from a refractometer may be off by in a drink with alcohol: too much to call it finished by. From memory. */
+const REFRACTOMETER_SD = 3;
+
 /** `observation` is a note; `pitch` is in the batch itself; a blend tops up with a drink. */
 function kindOf({ kind, sugarG, fruitG, volumeL, detail: kept }: EntryFacts): EventKind | null {
   const detail = (kept ?? {}) as EntryDetail;
   if (kind === 'observation') return 'note';
   if (kind === 'blend') return 'top_up';
-  // Off by up to 0.004 in a drink with alcohol: not good enough to pin a float to, or to call it finished by.
-  if (kind === 'reading' && detail.instrument === 'refractometer') return null;
   if (kind === 'addition' && !sugarG && !fruitG && !volumeL && INERT.has(detail.substance ?? '')) return null;
   return (EVENT_KINDS as readonly string[]).includes(kind) ? (kind as EventKind) : null;
 }
@@ -27,7 +28,22 @@ function eventOf(entry: EntryFacts): BatchEvent[] {
   const kind = kindOf(entry);
   if (!kind) return [];
   const { sugarG, fruitG, volumeL, gravity, neck } = entry;
-  return [{ at: entry.at.getTime(), kind, sugarG, fruitG, volumeL, gravity, neck, knownAt: entry.createdAt.getTime() }];
+  const detail = (entry.detail ?? {}) as EntryDetail;
+  return [
+    {
+      at: entry.at.getTime(),
+      kind,
+      sugarG,
+      fruitG,
+      volumeL,
+      gravity,
+      neck,
+      knownAt: entry.createdAt.getTime(),
+      ...(detail.instrument === 'refractometer' && { gravitySd: REFRACTOMETER_SD }),
+      // A drink that is poured in has used up sugar that its gravity no longer shows.
+      ...(kind === 'top_up' && typeof detail.original_gravity === 'number' && { originalGravity: detail.original_gravity }),
+    },
+  ];
 }
 
 /**

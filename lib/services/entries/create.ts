@@ -6,7 +6,9 @@ import type { Action, Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
 import type { CreateEntry, EntryBody, EntryDetail, LOGGED_KINDS } from '@/lib/contracts/batches';
 import { correctHydrometer } from '@/lib/core/gravity/hydrometer';
+import { correctHydrometerInDrink } from '@/lib/core/gravity/hydrometer-in-drink';
 import { correctBrix, gravityByRefractometer, sgOfBrix } from '@/lib/core/gravity/refractometer';
+import { abvBalling } from '@/lib/core/strength/strength';
 import { ConflictError, InvalidError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { loadBatch } from '../batches/load';
@@ -48,15 +50,28 @@ export async function gravityOf(batch: Batch, input: Measured, transaction: Tran
   if (sampleC < CORRECTED_C.min || sampleC > CORRECTED_C.max) {
     throw new InvalidError('The sample is too cold or too hot for a reading.', { temperature_c: [`must be ${CORRECTED_C.min} to ${CORRECTED_C.max} °C for a reading; let the sample come nearer to 20 °C`] });
   }
-  return correctHydrometer(gravity, sampleC, input.calibrated_at_c ?? undefined);
+  const calibratedC = input.calibrated_at_c ?? undefined;
+  const strength = await strengthAt(batch, correctHydrometer(gravity, sampleC, calibratedC), transaction);
+  return correctHydrometerInDrink(gravity, sampleC, strength, calibratedC);
+}
+
+/** Strength at a gravity, % vol, near enough to say how the sample widens: 0 before the pitch and where no original gravity is known. */
+async function strengthAt(batch: Batch, gravity: number, transaction: Transaction): Promise<number> {
+  if (batch.pitchedAt === null) return 0;
+  const og = await effectiveOgOf(batch, transaction);
+  return og === null ? 0 : abvBalling(og, gravity);
+}
+
+async function effectiveOgOf(batch: Batch, transaction: Transaction): Promise<number | null> {
+  const entries = await Entry.findAll({ where: { batchId: batch.id, removedAt: { [Op.is]: null } }, transaction });
+  return ledgerOf(batch, entries).effectiveOg;
 }
 
 async function byRefractometer(batch: Batch, shown: number, sampleC: number | null, transaction: Transaction): Promise<number> {
   const brix = sampleC === null ? shown : correctBrix(shown, sampleC);
   if (brix === null) throw new InvalidError('The sample is too cold or too warm for this table.', { temperature_c: ['must be 10 to 20 °C; leave it empty where the instrument corrects itself'] });
   if (batch.pitchedAt === null) return sgOfBrix(brix);
-  const entries = await Entry.findAll({ where: { batchId: batch.id, removedAt: { [Op.is]: null } }, transaction });
-  const og = ledgerOf(batch, entries).effectiveOg;
+  const og = await effectiveOgOf(batch, transaction);
   if (og === null) throw new InvalidError('Alcohol changes what a refractometer shows.', { 'detail.brix': ['needs the original gravity of the batch; tell that first, or use a hydrometer'] });
   const gravity = gravityByRefractometer(og, brix);
   if (gravity === null) throw new InvalidError('The reading is above the original gravity.', { 'detail.brix': ['is more than the must had at the start'] });

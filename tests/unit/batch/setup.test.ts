@@ -6,9 +6,16 @@ const entry = (over: Partial<EntryFacts>): EntryFacts => ({ kind: 'note', at: ne
 const kinds = (...entries: EntryFacts[]) => setupOf(batch, entries, 'UTC').events.map((event) => event.kind);
 
 describe('what the judgement reads of the log', () => {
-  it('takes a hydrometer’s reading and not a refractometer’s', () => {
-    expect(kinds(entry({ kind: 'reading', gravity: 1.01 }))).toEqual(['reading']);
-    expect(kinds(entry({ kind: 'reading', gravity: 1.01, detail: { instrument: 'refractometer', brix: 6 } }))).toEqual([]);
+  it('takes a hydrometer’s reading, and a refractometer’s with more doubt', () => {
+    const [byHydrometer, byRefractometer] = [entry({ kind: 'reading', gravity: 1.01 }), entry({ kind: 'reading', gravity: 1.01, detail: { instrument: 'refractometer', brix: 6 } })];
+    expect(setupOf(batch, [byHydrometer], 'UTC').events).toMatchObject([{ kind: 'reading', gravity: 1.01 }]);
+    expect(setupOf(batch, [byHydrometer], 'UTC').events[0]).not.toHaveProperty('gravitySd');
+    expect(setupOf(batch, [byRefractometer], 'UTC').events).toMatchObject([{ kind: 'reading', gravity: 1.01, gravitySd: 3 }]);
+  });
+
+  it('counts the sugar that a blended drink has used up', () => {
+    const blend = entry({ kind: 'blend', volumeL: 1, gravity: 1.002, detail: { original_gravity: 1.06 } });
+    expect(setupOf(batch, [blend], 'UTC').events).toMatchObject([{ kind: 'top_up', volumeL: 1, gravity: 1.002, originalGravity: 1.06 }]);
   });
 
   it('begins anew after what feeds, and not after a pinch of sulphite or acid', () => {
