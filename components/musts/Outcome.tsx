@@ -20,7 +20,9 @@ function Row({ name, says, between, how, children }: { name: string; says: strin
         {between && <span className="type-label text-ink2"> {between}</span>}
         {children}
       </dd>
-      <How how={how} of={name} className="justify-self-end open:col-span-full open:w-full" />
+      <dd className="justify-self-end has-[details[open]]:col-span-full has-[details[open]]:w-full">
+        <How how={how} of={name} />
+      </dd>
     </div>
   );
 }
