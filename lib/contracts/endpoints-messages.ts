@@ -12,7 +12,7 @@ export const endpointsMessages = {
   listMutes: endpoint({ method: 'GET', path: '/mutes', summary: 'Vessels that are muted now', access: 'alerts.read', response: muteList, status: 200 }),
   createMute: endpoint({ method: 'POST', path: '/batches/{id}/mutes', summary: 'Mute a vessel for a time; what can hurt someone is told all the same', access: 'alerts.mute', params: byId, body: createMute, response: muteSchema, status: 201 }),
   endMute: endpoint({ method: 'DELETE', path: '/mutes/{id}', summary: 'End a mute before its time', access: 'alerts.mute', params: byId, response: null, status: 204 }),
-  createDevice: endpoint({ method: 'POST', path: '/devices', summary: 'Take push messages on this device', access: 'alerts.read', body: createDevice, response: deviceSchema, status: 201 }),
+  createDevice: endpoint({ method: 'POST', path: '/devices', summary: 'Take push messages on this device', access: 'alerts.read', by: 'session', body: createDevice, response: deviceSchema, status: 201 }),
   removeDevice: endpoint({ method: 'DELETE', path: '/devices/{id}', summary: 'No more push messages on a device of the person', access: 'person', params: byId, response: null, status: 204 }),
   getTakeLink: endpoint({ method: 'GET', path: '/take/{token}', summary: 'What a mailed link would take in hand; looking changes nothing', access: 'anyone', params: byToken, response: takePage, status: 200 }),
   useTakeLink: endpoint({ method: 'POST', path: '/take/{token}', summary: 'Take the alert in hand by a mailed link, once', access: 'anyone', params: byToken, response: takePage, status: 200 }),

@@ -123,11 +123,11 @@ describe('who may do what', () => {
     await things(mine.cellarId, mine.personId);
     const foreign = await things(theirs.cellarId, theirs.personId);
     const { cookie } = await sessionCookie(mine.personId);
-    for (const path of ['/batches', '/sensors', '/alerts', '/members', `/shelf?${SHELF_SPAN}`, '/musts', '/catalogue', '/jobs', '/lots', '/lots.csv', '/places', '/shares', '/invitations', '/tokens', '/audit', '/audit.csv', '/audit.json']) {
+    for (const path of ['/batches', '/sensors', '/alerts', '/members', `/shelf?${SHELF_SPAN}`, '/musts', '/catalogue', '/jobs', '/lots', '/lots.csv', '/places', '/shares', '/mutes', '/messages', '/invitations', '/tokens', '/audit', '/audit.csv', '/audit.json']) {
       const answer = await call(web, 'GET', `/api/v1${path}`, { cookie });
       expect(answer.status).toBe(200);
       const text = JSON.stringify(answer.body);
-      for (const secret of [foreign.batchId, foreign.sensorId, foreign.alertId, theirs.person.email, foreign.mustId, foreign.itemId, foreign.jobId, foreign.lotId, foreign.placeId, foreign.shareId, foreign.invitationId, foreign.tokenId, foreign.memberId]) expect(text, path).not.toContain(secret);
+      for (const secret of [foreign.batchId, foreign.sensorId, foreign.alertId, theirs.person.email, foreign.mustId, foreign.itemId, foreign.jobId, foreign.lotId, foreign.placeId, foreign.shareId, foreign.muteId, foreign.deviceId, foreign.invitationId, foreign.tokenId, foreign.memberId]) expect(text, path).not.toContain(secret);
     }
   });
 
