@@ -1,4 +1,5 @@
 import Link from 'next/link';
+import type { ReactNode } from 'react';
 import { BackIcon, OnwardIcon } from '@/components/ui/icons';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Vessel } from '@/components/vessel/Vessel';
@@ -14,6 +15,8 @@ export interface HeadActions {
   /** Where additions, racking, fining and the family stand; null for those who only look. */
   work: string | null;
 }
+
+const compareHref = (batchId: string): string => `/compare?batches=${batchId}`;
 
 function Facts({ facts, phone }: { facts: readonly Fact[]; phone: boolean }) {
   const shown = phone ? facts.filter((fact) => fact.phone) : facts;
@@ -53,6 +56,9 @@ export function BatchHead({ batch, vessel, facts, actions }: { batch: BatchBody;
             {actions.onRead && <Button onClick={actions.onRead}>Read by hand</Button>}
             {actions.onAdd && <Button onClick={actions.onAdd}>Add</Button>}
             {actions.work && <LinkButton href={actions.work}>Cellar work</LinkButton>}
+            <LinkButton look="quiet" href={compareHref(batch.id)}>
+              Compare
+            </LinkButton>
             {actions.onSetup && (
               <Button look="quiet" onClick={actions.onSetup}>
                 Set-up
@@ -90,15 +96,20 @@ export function PhoneHead({ batch, meta, onSetup }: { batch: BatchBody; meta: re
   );
 }
 
-export function PhoneFacts({ facts, work }: { facts: readonly Fact[]; work: string | null }) {
+export function PhoneFacts({ batchId, facts, work }: { batchId: string; facts: readonly Fact[]; work: string | null }) {
   return (
     <div className="strip:hidden">
       <Facts facts={facts} phone />
-      {work && (
-        <Link href={work} className="type-label flex min-h-11 items-center justify-between border-b px-(--margin) text-ink no-underline">
-          Cellar work: add, rack, fine, family <OnwardIcon size={11} />
-        </Link>
-      )}
+      {work && <Onward href={work}>Cellar work: add, rack, fine, family</Onward>}
+      <Onward href={compareHref(batchId)}>Compare with another batch</Onward>
     </div>
+  );
+}
+
+function Onward({ href, children }: { href: string; children: ReactNode }) {
+  return (
+    <Link href={href} className="type-label flex min-h-11 items-center justify-between border-b px-(--margin) text-ink no-underline">
+      {children} <OnwardIcon size={11} />
+    </Link>
   );
 }

@@ -156,7 +156,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
       <PhoneHead batch={batch} onSetup={actions.onSetup} meta={[`${day === null ? 'not pitched' : `day ${day}`}, ${litres(batch.volume_l)}`, ...(heard === null ? [] : [`heard ${when(heard, now, timeZone)}`])]} />
       <BatchHead batch={batch} vessel={vessel} facts={facts} actions={actions} />
       {first && <Decision row={first} vessel={vessel} when={whenOf(first, judged, now, timeZone)} done={working ? doneAct(first, batch, open, may('entries.alter')) : null} onRead={onRead} mayTake={may('alerts.acknowledge')} />}
-      <PhoneFacts facts={facts} work={actions.work} />
+      <PhoneFacts batchId={batch.id} facts={facts} work={actions.work} />
       {working && <MuteBar batch={batch} now={now} timeZone={timeZone} />}
       <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px] wide:grid-rows-[auto_1fr]">
         <div className="wide:col-start-1 wide:row-start-1">
