@@ -157,7 +157,6 @@ function Loaded({ batch }: { batch: BatchBody }) {
       <BatchHead batch={batch} vessel={vessel} facts={facts} actions={actions} />
       {first && <Decision row={first} vessel={vessel} when={whenOf(first, judged, now, timeZone)} done={working ? doneAct(first, batch, open, may('entries.alter')) : null} onRead={onRead} mayTake={may('alerts.acknowledge')} />}
       <PhoneFacts batchId={batch.id} facts={facts} work={actions.work} />
-      {working && <MuteBar batch={batch} now={now} timeZone={timeZone} />}
       <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px] wide:grid-rows-[auto_1fr]">
         <div className="wide:col-start-1 wide:row-start-1">
           <Evidence name={batch.name} picture={picture} span={span} whole={whole} onSpan={(next) => setChosen(isWhole(next, whole) ? null : next)} timeZone={timeZone} phone={phone} arriving={series.loading} trouble={trouble ? `${trouble.what} did not arrive (${trouble.error?.status ? `error ${trouble.error.status}` : 'no answer'}). Shown is what was known before.` : null} onRetry={retryAll} plays={footing ? plays : null}>
@@ -171,6 +170,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
           ) : (
             <p className="type-body px-(--margin) py-3 text-ink2">Not judged yet. {batch.pitched_at === null ? 'Log the pitch; the calls follow.' : `It is ${STAGE_WORDS.unknown} how it goes until the first readings are in.`}</p>
           )}
+          {working && <MuteBar batch={batch} now={now} timeZone={timeZone} />}
         </div>
         <div className="wide:col-start-1 wide:row-start-2">
           <Log batchId={batch.id} rows={entries ? log : null} now={now} timeZone={timeZone} onWrite={may('entries.create') ? () => open('observation') : null} onCorrect={(entry) => setOpened({ form: 'entry', kind: entry.kind as EntryKind, entry })} />

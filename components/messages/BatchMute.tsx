@@ -33,12 +33,12 @@ export function LaneMuted({ batchId }: { batchId: string }) {
   );
 }
 
-/** On the batch page: one ruled line, drawn only where it says something or somebody may mute. */
+/** Below the calls of a batch, drawn only for those whom they tell. */
 export function MuteBar(props: { batch: { id: string; name: string }; now: number; timeZone: string }) {
   const { may } = useMe();
   if (!may('alerts.read')) return null;
   return (
-    <div className="flex min-h-9 items-center border-b bg-desk px-(--margin) py-1">
+    <div className="flex min-h-9 items-center px-(--margin) py-3">
       <BatchMute {...props} />
     </div>
   );

@@ -1,5 +1,6 @@
 import type { Metadata } from 'next';
 import { redirect } from 'next/navigation';
+import { UnsentNotice } from '@/components/offline/UnsentNotice';
 import { Settling } from '@/components/sign-in/Settling';
 import { SignInForm } from '@/components/sign-in/SignInForm';
 import { Wordmark } from '@/components/ui/Mark';
@@ -25,6 +26,7 @@ export default async function SignInPage({ searchParams }: { searchParams: Promi
       </div>
       <div className="flex flex-col justify-center px-(--margin) py-8 max-wide:border-t-[1.5px] max-wide:border-ink wide:w-[461px] wide:border-l-[1.5px] wide:border-ink wide:pl-[57px] wide:pr-14">
         <div className="w-full max-w-[420px] wide:-mt-32">
+          <UnsentNotice />
           <SignInForm to={to} />
         </div>
       </div>
