@@ -231,10 +231,10 @@ describe('without the network', () => {
     await page.goto(`${house.web.url}/shelf`);
     await page.locator('[data-lane]').first().waitFor();
     await context.setOffline(true);
-    await page.getByText(/Offline since/).waitFor({ timeout: 60_000 });
+    await page.getByText(/Offline( since|\. Shown as of)/).waitFor({ timeout: 60_000 });
     expect(await page.locator('[data-lane]').count()).toBeGreaterThan(0);
     await context.setOffline(false);
-    await page.getByText(/Offline since/).waitFor({ state: 'hidden', timeout: 60_000 });
+    await page.getByText(/Offline( since|\. Shown as of)/).waitFor({ state: 'hidden', timeout: 60_000 });
     await context.close();
   });
 });
