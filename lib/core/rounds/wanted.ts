@@ -93,7 +93,9 @@ function readingDue(input: RoundsInput): Wanted[] {
 function airlockDue(input: RoundsInput): Wanted[] {
   const { pitchedAt, airlockAt, neck, at, name } = input;
   if (neck !== 'airlock' || pitchedAt === null) return [];
-  const dueAt = Math.max(pitchedAt, airlockAt ?? 0) + AIRLOCK_EVERY_MS;
+  const from = Math.max(pitchedAt, airlockAt ?? 0);
+  // Rounds that nobody made are not owed one by one: it is as late as the last of them.
+  const dueAt = from + Math.max(1, Math.floor((at - from) / AIRLOCK_EVERY_MS)) * AIRLOCK_EVERY_MS;
   return at < dueAt - AHEAD_MS ? [] : [{ kind: 'airlock', source: 'schedule', title: `Look at the water in ${name}’s airlock`, note: null, dueAt, exact: false }];
 }
 

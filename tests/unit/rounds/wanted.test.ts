@@ -53,6 +53,9 @@ describe('the jobs a batch wants', () => {
   it('look after the water of an airlock, a fortnight after somebody did', () => {
     expect(titles({}, { neck: 'airlock', pitchedAt: AT - 20 * DAY, airlockAt: AT - 10 * DAY })).toEqual([]);
     expect(titles({}, { neck: 'airlock', pitchedAt: AT - 20 * DAY, airlockAt: AT - 13.5 * DAY })).toEqual(['Look at the water in Perry’s airlock']);
+    expect(wantedJobs(input({}, { neck: 'airlock', pitchedAt: AT - 16 * DAY }))).toMatchObject([{ dueAt: AT - 2 * DAY }]);
+    // After months without a word it is late since the last fortnight, not since the first.
+    expect(wantedJobs(input({}, { neck: 'airlock', pitchedAt: AT - 87 * DAY }))).toMatchObject([{ dueAt: AT - 3 * DAY }]);
   });
 
   it('are at most one of a kind and the same for the same judgement', () => {
