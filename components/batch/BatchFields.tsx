@@ -4,6 +4,8 @@ import type { ReactNode } from 'react';
 import { drinkHex } from '@/components/charts/palette';
 import { Choice } from '@/components/ui/Choice';
 import { Field, Select } from '@/components/ui/Field';
+import { Sentence } from '@/components/ui/Sentence';
+import { UnitField } from '@/components/units/UnitField';
 import { DRINK_COLOURS, VESSEL_KINDS } from '@/lib/contracts/batches';
 import { DRINK_KINDS, NECKS } from '@/lib/core/types';
 import { withKind, type BatchDraft, type BatchErrors } from './batch-form';
@@ -74,8 +76,8 @@ export function BatchFields({ draft, errors, onChange, latest, fresh, promise, c
             <option key={kind}>{kind}</option>
           ))}
         </Select>
-        <Field label="It holds, brim full" unit="L" {...figure('vessel')} />
-        <Field label="In it now" unit="L" {...figure('volume')} />
+        <UnitField measure="volume" label="It holds, brim full" {...text('vessel')} />
+        <UnitField measure="volume" label="In it now" {...text('volume')} />
         <Select label="What closes the neck" value={draft.neck} onChange={set('neck')} error={errors.neck}>
           {NECKS.map((neck) => (
             <option key={neck} value={neck}>
@@ -85,7 +87,7 @@ export function BatchFields({ draft, errors, onChange, latest, fresh, promise, c
         </Select>
         {room && (
           <p role="status" className={`type-reason col-span-2 border-l-[3px] pl-3 ${room.tight ? 'border-ochre' : 'border-rule2 text-ink2'}`}>
-            {room.text}
+            <Sentence>{room.text}</Sentence>
           </p>
         )}
         {draft.neck === 'bung' && <p className="type-reason col-span-2 border-l-[3px] border-madder pl-3">Never stop a vessel that works: the pressure can break the glass.</p>}
@@ -94,14 +96,14 @@ export function BatchFields({ draft, errors, onChange, latest, fresh, promise, c
       </Group>
       <Group title="The start">
         <Field className="col-span-2" label="Pitched, local time" type="datetime-local" max={latest} hint="Empty: not pitched yet. Log the pitch when it is done." {...text('pitchedAt')} />
-        <Field className="col-span-2" label="Original gravity, at 20 °C" unit="SG" placeholder="1.048" hint="Empty: not measured. Strength and attenuation are then not known." {...figure('gravity')} />
+        <UnitField measure="gravity" className="col-span-2" label={<Sentence>Original gravity, at 20 °C</Sentence>} placeholder="1.048" hint="Empty: not measured. Strength and attenuation are then not known." {...text('gravity')} />
       </Group>
       <Group title="The yeast" note={fresh ? `Filled in with what is usual for ${KIND_WORDS[draft.kind]} (common practice). The packet of your yeast goes before it.` : undefined}>
         <Field className="col-span-2" label="Yeast" maxLength={80} {...text('yeast')} />
         <Field label="Attenuation, from" unit="%" {...figure('attenuationMin')} />
         <Field label="to" unit="%" {...figure('attenuationMax')} />
-        <Field label="Temperature, from" unit="°C" {...figure('temperatureMin')} />
-        <Field label="to" unit="°C" {...figure('temperatureMax')} />
+        <UnitField measure="temperature" label="Temperature, from" {...text('temperatureMin')} />
+        <UnitField measure="temperature" label="to" {...text('temperatureMax')} />
         <Field label="Bears alcohol up to" unit="%" {...figure('tolerance')} />
         {children}
       </Group>

@@ -3,6 +3,7 @@
 import { Choice } from '@/components/ui/Choice';
 import { Field, Select, TextField } from '@/components/ui/Field';
 import { Sentence } from '@/components/ui/Sentence';
+import { UnitField } from '@/components/units/UnitField';
 import { CLARITIES, FOAMS, SUBSTANCES } from '@/lib/contracts/batches';
 import { NECKS } from '@/lib/core/types';
 import { fieldsOf, type DraftErrors, type EntryDraft, type EntryField, type EntryKind } from './entry-form';
@@ -44,7 +45,7 @@ export function EntryFields({ draft, errors, latest, known, onChange }: EntryFie
         ]}
       />
     ),
-    gravity: <Field label={adds ? 'Gravity of what went in' : 'Gravity as read'} unit="SG" placeholder="1.048" {...figure('gravity')} />,
+    gravity: <UnitField measure="gravity" label={adds ? 'Gravity of what went in' : 'Gravity as read'} placeholder="1.048" {...text('gravity')} />,
     brix: (
       <div>
         <Field label="It shows" unit="°Bx" placeholder="8.2" {...figure('brix')} />
@@ -56,14 +57,14 @@ export function EntryFields({ draft, errors, latest, known, onChange }: EntryFie
       </div>
     ),
     temperature: (
-      <Field
+      <UnitField
+        measure="temperature"
         label="Sample temperature"
-        unit="°C"
-        hint={draft.instrument === 'refractometer' ? 'Empty: the instrument corrects itself.' : 'Corrected to 20 °C. Empty: kept as read.'}
-        {...figure('temperature')}
+        hint={<Sentence>{draft.instrument === 'refractometer' ? 'Empty: the instrument corrects itself.' : 'Corrected to 20 °C. Empty: kept as read.'}</Sentence>}
+        {...text('temperature')}
       />
     ),
-    calibratedAt: <Field label="Hydrometer made for" unit="°C" hint="Printed on it: 20, often 15.6 on older ones." {...figure('calibratedAt')} />,
+    calibratedAt: <UnitField measure="temperature" label="Hydrometer made for" hint={<Sentence>Printed on it: 20 °C, often 15.6 °C on older ones.</Sentence>} {...text('calibratedAt')} />,
     ph: <Field label="pH, if measured" placeholder="3.4" {...figure('ph')} />,
     bubbles: <Field label="Bubbles a minute" placeholder="12" {...figure('bubbles')} />,
     foam: <Choice label="Foam" value={draft.foam} onChoose={(foam) => onChange({ foam })} options={open(FOAMS, FOAM_WORDS)} />,
@@ -80,7 +81,7 @@ export function EntryFields({ draft, errors, latest, known, onChange }: EntryFie
         ))}
       </Select>
     ),
-    volume: <Field label={adds ? 'How much went in' : 'Volume in the vessel now'} unit="L" {...figure('volume')} />,
+    volume: <UnitField measure="volume" label={adds ? 'How much went in' : 'Volume in the vessel now'} {...text('volume')} />,
     substance: (
       <Select label="What went in" value={draft.substance} onChange={set('substance')} error={errors.substance}>
         {SUBSTANCES.map((substance) => (

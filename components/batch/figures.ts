@@ -1,10 +1,11 @@
 import { gravityDoubt, gravityText, gravityTyped, temperatureText, volumeText } from '@/components/ui/units';
+import { typedNumber } from '@/components/units/typed';
 
 /** Figures as the log writes them, in the units that the person reads: a real minus, a unit beside each. */
 
 const minus = (text: string): string => text.replace('-', '−');
 
-export { gravityText };
+export { gravityText, typedNumber };
 export const degrees = (value: number): string => temperatureText(value);
 export const percent = (value: number): string => `${value.toFixed(1)} %`;
 export const litres = (value: number): string => volumeText(value);
@@ -17,13 +18,6 @@ export function points(value: number): string {
 
 /** Half the width of an interval, as `± 0.003`; never less than the last decimal shown. */
 export const doubt = (estimate: { lo: number; hi: number }): string => gravityDoubt((estimate.lo + estimate.hi) / 2, Math.max(0.001, (estimate.hi - estimate.lo) / 2));
-
-/** A number as a person types it: `1,048`, `1.048`, ` 12 `. Null where it is empty, NaN where it is no number. */
-export function typedNumber(text: string): number | null {
-  const trimmed = text.trim().replace(',', '.').replace('−', '-');
-  if (trimmed === '') return null;
-  return /^[-+]?(\d+\.?\d*|\.\d+)$/.test(trimmed) ? Number(trimmed) : NaN;
-}
 
 /**
  * As `typedNumber`; a hydrometer is often read aloud without its point: `1048` is

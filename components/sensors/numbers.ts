@@ -1,10 +1,10 @@
 import { instantOf, wallTime } from '@/components/charts/zone';
+import { typedNumber } from '@/components/units/typed';
 
 /** A number as people write it, with a point or a comma; null where it is none, so that the form says what is missing. */
 export function readNumber(text: string): number | null {
-  const cleaned = text.trim().replace('−', '-').replace(',', '.');
-  if (!/^[+-]?(\d+\.?\d*|\.\d+)$/.test(cleaned)) return null;
-  return Number(cleaned);
+  const value = typedNumber(text);
+  return value === null || Number.isNaN(value) ? null : value;
 }
 
 const two = (value: number) => String(value).padStart(2, '0');

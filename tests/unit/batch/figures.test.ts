@@ -1,16 +1,7 @@
 import { describe, expect, it } from 'vitest';
-import { doubt, grams, litres, points, typedGravity, typedNumber } from '@/components/batch/figures';
+import { doubt, grams, litres, points, typedGravity } from '@/components/batch/figures';
 
 describe('a number as a person types it', () => {
-  it('takes a comma or a point, spaces around it and a real minus', () => {
-    expect([typedNumber(' 1,048 '), typedNumber('12.5'), typedNumber('−3'), typedNumber('.5')]).toEqual([1.048, 12.5, -3, 0.5]);
-  });
-
-  it('is null where nothing was typed and NaN where it is no number', () => {
-    expect(typedNumber('  ')).toBeNull();
-    for (const text of ['1.0.4', 'abc', '1e3', '12 L', '1,0,4']) expect(typedNumber(text), text).toBeNaN();
-  });
-
   it('reads a hydrometer without its point, and leaves any other whole number alone', () => {
     expect([typedGravity('1048'), typedGravity('998'), typedGravity('1.048'), typedGravity('1,048')]).toEqual([1.048, 0.998, 1.048, 1.048]);
     expect(typedGravity('48')).toBe(48);
