@@ -22,20 +22,15 @@ const HUBER_K = 1.5;
 const SIGMA_FLOOR = 0.08;
 const SE_FLOOR = 0.05;
 
-let size = 512;
-let residuals = new Float64Array(size);
-let weights = new Float64Array(size);
-let scratch = new Float64Array(size);
+let buffers = { x: new Float64Array(512), residuals: new Float64Array(512), scratch: new Float64Array(512) };
 const blockT = new Float64Array(BLOCKS);
 const blockG = new Float64Array(BLOCKS);
 const slopes = new Float64Array((BLOCKS * (BLOCKS - 1)) / 2);
 
-function grow(n: number): void {
-  if (n <= size) return;
-  size = 2 * n;
-  residuals = new Float64Array(size);
-  weights = new Float64Array(size);
-  scratch = new Float64Array(size);
+/** Room for n points; one set serves every line, for a history takes thousands of them. */
+function room(n: number): typeof buffers {
+  if (n > buffers.x.length) buffers = { x: new Float64Array(2 * n), residuals: new Float64Array(2 * n), scratch: new Float64Array(2 * n) };
+  return buffers;
 }
 
 /** Lags, in bins, over which noise may hang together. */
@@ -48,7 +43,7 @@ const LAGS = 6;
  * noise on top hides the slow part from the first lag. Each autocorrelation is
  * raised by 2/n for the line that was taken out; at most 19.
  */
-function inflation(n: number): number {
+function inflation(residuals: Float64Array, n: number): number {
   let square = 0;
   for (let i = 0; i < n; i += 1) square += residuals[i]! * residuals[i]!;
   if (square <= 0) return 1;
@@ -74,21 +69,20 @@ function inflation(n: number): number {
 export function robustLine(t: Float64Array, g: Float64Array, from: number, to: number): Line | null {
   const n = to - from;
   if (n < 5) return null;
-  grow(n);
+  const { x, residuals, scratch } = room(n);
   const middle = (t[from]! + t[to - 1]!) / 2;
+  for (let i = 0; i < n; i += 1) x[i] = t[from + i]! - middle;
 
-  let a: number;
-  let b: number;
   const blocks = Math.min(BLOCKS, n);
   for (let i = 0; i < blocks; i += 1) {
-    const lo = from + Math.floor((i * n) / blocks);
-    const hi = from + Math.floor(((i + 1) * n) / blocks);
+    const lo = Math.floor((i * n) / blocks);
+    const hi = Math.floor(((i + 1) * n) / blocks);
     let sum = 0;
     for (let j = lo; j < hi; j += 1) {
-      sum += t[j]!;
-      scratch[j - lo] = g[j]!;
+      sum += x[j]!;
+      scratch[j - lo] = g[from + j]!;
     }
-    blockT[i] = sum / (hi - lo) - middle;
+    blockT[i] = sum / (hi - lo);
     blockG[i] = medianInPlace(scratch, 0, hi - lo);
   }
   let pairs = 0;
@@ -102,19 +96,22 @@ export function robustLine(t: Float64Array, g: Float64Array, from: number, to: n
     }
   }
   if (pairs === 0) return null;
-  b = medianInPlace(slopes, 0, pairs);
+  let b = medianInPlace(slopes, 0, pairs);
   for (let i = 0; i < blocks; i += 1) scratch[i] = blockG[i]! - b * blockT[i]!;
-  a = medianInPlace(scratch, 0, blocks);
+  let a = medianInPlace(scratch, 0, blocks);
 
   let sigma = SIGMA_FLOOR;
+  let counted = 0;
+  let spread = 0;
   for (let round = 0; round < ROUNDS; round += 1) {
-    for (let i = 0; i < n; i += 1) {
-      const r = g[from + i]! - a - b * (t[from + i]! - middle);
-      residuals[i] = r < 0 ? -r : r;
-      scratch[i] = r < 0 ? -r : r;
-    }
     // The scale settles before the line does.
-    if (round < 2) sigma = Math.max(SIGMA_FLOOR, 1.4826 * medianInPlace(scratch, 0, n));
+    if (round < 2) {
+      for (let i = 0; i < n; i += 1) {
+        const r = g[from + i]! - a - b * x[i]!;
+        scratch[i] = r < 0 ? -r : r;
+      }
+      sigma = Math.max(SIGMA_FLOOR, 1.4826 * medianInPlace(scratch, 0, n));
+    }
     const knee = HUBER_K * sigma;
     const cut = 6 * sigma + 0.5;
     let sw = 0;
@@ -122,20 +119,24 @@ export function robustLine(t: Float64Array, g: Float64Array, from: number, to: n
     let sg = 0;
     let stt = 0;
     let stg = 0;
+    counted = 0;
     for (let i = 0; i < n; i += 1) {
-      const r = residuals[i]!;
-      const w = r <= knee ? 1 : r > cut ? 0 : knee / r;
-      weights[i] = w;
-      const x = t[from + i]! - middle;
+      const xi = x[i]!;
       const y = g[from + i]! - a;
+      const r = y - b * xi;
+      const size = r < 0 ? -r : r;
+      if (size > cut) continue;
+      const w = size <= knee ? 1 : knee / size;
+      counted += 1;
       sw += w;
-      st += w * x;
+      st += w * xi;
       sg += w * y;
-      stt += w * x * x;
-      stg += w * x * y;
+      stt += w * xi * xi;
+      stg += w * xi * y;
     }
     const det = sw * stt - st * st;
     if (!(det > 1e-9 * sw)) return null;
+    spread = det / sw;
     const slope = (sw * stg - st * sg) / det;
     const shift = (sg - slope * st) / sw;
     // Closer than a twentieth of the least standard error.
@@ -144,25 +145,14 @@ export function robustLine(t: Float64Array, g: Float64Array, from: number, to: n
     a += shift;
     if (still) break;
   }
+  if (counted < 5) return null;
 
-  let sw = 0;
-  let st = 0;
-  let stt = 0;
-  let counted = 0;
   const clip = 2.5 * sigma;
   for (let i = 0; i < n; i += 1) {
-    const x = t[from + i]! - middle;
-    const w = weights[i]!;
-    sw += w;
-    st += w * x;
-    stt += w * x * x;
-    if (w > 0) counted += 1;
-    const r = g[from + i]! - a - b * x;
+    const r = g[from + i]! - a - b * x[i]!;
     residuals[i] = r > clip ? clip : r < -clip ? -clip : r;
   }
-  if (counted < 5) return null;
-  const spread = stt - (st * st) / sw;
-  const variance = (sigma * sigma * inflation(n)) / spread;
+  const variance = (sigma * sigma * inflation(residuals, n)) / spread;
   return {
     slope: b * 24,
     se: Math.max(SE_FLOOR, 24 * Math.sqrt(variance)),

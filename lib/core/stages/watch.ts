@@ -13,6 +13,10 @@ export const BOTTLE_POINTS = 0.95;
 /** Hours after the pitch at which a start is overdue. */
 export const OVERDUE_H: Record<BatchSetup['kind'], number> = { beer: 48, cider: 72, mead: 72, wine: 72 };
 
+/** Hours between two judgements of a batch that rests ready for bottles, and how far its level may move meanwhile, points (ours). */
+const REST_LOOK_H = 12;
+const REST_POINTS = 0.8;
+
 /** Hours that a cold vessel may need to work as it could, once it is warm again (ours). */
 const WARMING_H = 60;
 
@@ -23,6 +27,8 @@ export class Watch extends Intake {
   private lastCold: number | null = null;
   /** Hour since which it has been cold, with no warm days between. */
   private coldSince = 0;
+  /** Level at the last judgement, points, of a batch that was ready for bottles. */
+  private restLevel: number | null = null;
 
   /** Takes in what was measured before `hour` and applies every rule once. */
   look(hour: number, readings: Reading[]): void {
@@ -30,7 +36,15 @@ export class Watch extends Intake {
     this.watchSteps();
     this.watchFloat();
     if (this.og === null) this.guessOg();
-    this.judge();
+    if (!this.restsStill(hour)) this.judge();
+  }
+
+  /** Ready for bottles, nothing about to begin and its level as it was: there is nothing to weigh at every look. */
+  private restsStill(hour: number): boolean {
+    if (this.restLevel === null || !this.bottle.on || this.frozen || hour % REST_LOOK_H === 0) return false;
+    if ([this.rising, this.drifting, this.refermenting, this.stuck, this.sluggish].some((one) => one.on || one.run > 0)) return false;
+    const level = this.track.level(hour - 6, hour);
+    return level !== null && Math.abs(level - this.restLevel) < REST_POINTS;
   }
 
   private judge(): void {
@@ -52,6 +66,7 @@ export class Watch extends Intake {
     if (this.lastHand && Math.abs(this.lastHand.miss) > 4 && hour - this.lastHand.hour < 168 && this.lastHand.hour > 12) {
       hold(this.drifting, hour, true, 1, false);
     }
+    this.restLevel = this.bottle.on ? this.track.level(hour - 6, hour) : null;
   }
 
   private noteCold(hour: number): void {
@@ -188,11 +203,12 @@ export class Watch extends Intake {
     const prior = this.fgPrior();
     const limit = this.stuckFloor();
     const line48 = this.line(48);
-    const slow = (line: Line | null, rate: number, upper: number): boolean =>
-      line !== null && -line.slope < rate && -line.slope + 1.64 * line.se < upper;
     const settled = this.quietSinceAddition(60, 120);
-    const begun = (): boolean => hour - (this.started.since ?? hour) > 96 || this.progress(level) > 0.12;
-    const flat = level > limit && settled && (slow(line48, 0.5, 0.75) || slow(this.line(72), 0.35, 0.5)) && begun();
+    const flat =
+      level > limit &&
+      settled &&
+      (slowerThan(line48, 0.5, 0.75) || slowerThan(this.line(72), 0.35, 0.5)) &&
+      (hour - (this.started.since ?? hour) > 96 || this.progress(level) > 0.12);
     const moving =
       this.stuck.on &&
       [8, 24].some((window) => {
@@ -220,15 +236,22 @@ export class Watch extends Intake {
     // A batch that was sweetened may well work again; any other falls for good reason only when it is plain.
     const drop = this.sweetened ? 1.5 : 2.5;
     const pace = this.sweetened ? 0.25 : 0.5;
-    const falls = (): boolean =>
-      [24, 48].some((window) => {
-        const line = this.line(window);
-        return line !== null && line.slope + 2 * line.se < -pace;
-      });
     const line48 = this.line(48);
     const still = line48 !== null && -line48.slope + line48.se < 0.3 && Math.abs(line48.slope) < 0.15;
     const wasOn = this.refermenting.on;
-    hold(this.refermenting, hour, level < this.plateau - drop && !this.stabilised && falls(), 3, still || this.stabilised);
+    hold(this.refermenting, hour, level < this.plateau - drop && !this.stabilised && this.fallsBy(pace), 3, still || this.stabilised);
     if (wasOn && !this.refermenting.on) this.plateau = level;
   }
+
+  /** A day or two fall faster than so many points a day, beyond doubt. */
+  private fallsBy(pace: number): boolean {
+    return [24, 48].some((window) => {
+      const line = this.line(window);
+      return line !== null && line.slope + 2 * line.se < -pace;
+    });
+  }
+}
+
+function slowerThan(line: Line | null, rate: number, upper: number): boolean {
+  return line !== null && -line.slope < rate && -line.slope + 1.64 * line.se < upper;
 }

@@ -66,6 +66,13 @@ describe('the calls', () => {
     expect(stage).toBe('terminal');
   });
 
+  it('take "ready" back when a batch that has rested for weeks begins to fall', () => {
+    // From day 45.1, between two of the judgements that a resting batch is given.
+    const readings = record(49, (day) => cider(Math.min(day, 45.1)) - 1.2 * Math.max(0, day - 45.1));
+    expect(at(45, readings).calls.bottle.verdict).toBe('yes');
+    expect(at(48, readings).calls.bottle.verdict).not.toBe('yes');
+  });
+
   it('call a stall with sugar left, and forbid the bottle', () => {
     const stopped = (day: number): number => Math.max(24, cider(day));
     const { calls } = at(16, record(16, stopped));
