@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { timestamp } from '../contracts/common';
 import { InvalidError } from '../errors';
 
 /** Where a page ended: the order's time, as exactly as it is kept, and the row's key. */
@@ -7,7 +8,11 @@ export interface Cursor {
   key: string;
 }
 
-const shape = z.tuple([z.string().refine((value) => /^\d{4}-\d\d-\d\d[ T]\d\d:\d\d:\d\d/.test(value) && !Number.isNaN(Date.parse(value))), z.string().max(64)]);
+/** PostgreSQL writes `2026-03-04 06:00:00.123456+00`, an ISO date has a T and minutes in its zone. Zones go no further than 15 hours there. */
+const asRfc3339 = (value: string) => value.replace(' ', 'T').replace(/([+-](?:0\d|1[0-5]))$/, '$1:00');
+const isTime = (value: string) => timestamp.safeParse(asRfc3339(value)).success && !/[+-](1[6-9]|2\d):\d\d$/.test(value);
+
+const shape = z.tuple([z.string().refine(isTime), z.string().max(64)]);
 
 export const encodeCursor = ({ at, key }: Cursor): string => Buffer.from(JSON.stringify([at, key])).toString('base64url');
 
