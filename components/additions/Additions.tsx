@@ -3,6 +3,7 @@
 import { useState } from 'react';
 import { typedNumber } from '@/components/batch/figures';
 import { Field, Select } from '@/components/ui/Field';
+import { UnitField } from '@/components/units/UnitField';
 import type { DrinkBody } from '@/lib/contracts/family';
 import type { DrinkKind } from '@/lib/core/types';
 import { ACIDS, acidDose, tanninDose, USUAL_ACID, USUAL_PH, type Acid } from '@/lib/core/additions/acid';
@@ -99,7 +100,7 @@ function Sulphite({ batchId, drink, mayLog }: Props) {
     <Dose title="Sulphite" batchId={batchId} mayLog={mayLog} told={told} needs="Tell the pH, 2.5 to 4.6, and the temperature: how much of it protects depends on both.">
       <Field label="pH" inputMode="decimal" autoComplete="off" value={ph} onChange={(event) => setPh(event.target.value)} />
       <Field label="Free now" unit="mg/L" inputMode="decimal" autoComplete="off" value={free} onChange={(event) => setFree(event.target.value)} hint="Empty: not measured." />
-      <Field label="Drink" unit="°C" inputMode="decimal" autoComplete="off" value={celsius} onChange={(event) => setCelsius(event.target.value)} />
+      <UnitField measure="temperature" label="Drink" value={celsius} onChange={(event) => setCelsius(event.target.value)} />
       <Field label="Molecular wanted" unit="mg/L" inputMode="decimal" autoComplete="off" value={target} onChange={(event) => setTarget(event.target.value)} hint={`${MOLECULAR_TARGETS.usual} usual, ${MOLECULAR_TARGETS.secure} secure`} />
       <Select label="Salt" className="col-span-2" value={salt} onChange={(event) => setSalt(event.target.value === 'sodium_metabisulphite' ? 'sodium_metabisulphite' : 'potassium_metabisulphite')}>
         {Object.entries(SULPHITE_SALTS).map(([key, item]) => (

@@ -25,7 +25,6 @@ import { EntryForm } from './EntryForm';
 import type { EntryDraft, EntryKind } from './entry-form';
 import { Evidence } from './Evidence';
 import { factsOf, type LastReading } from './facts';
-import { gravityText, litres } from './figures';
 import { Log } from './Log';
 import { logRows } from './log';
 import { OtherCurves } from './OtherCurves';
@@ -160,7 +159,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
       <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px] wide:grid-rows-[auto_1fr]">
         <div className="wide:col-start-1 wide:row-start-1">
           <Evidence name={batch.name} picture={picture} span={span} whole={whole} onSpan={(next) => setChosen(isWhole(next, whole) ? null : next)} timeZone={timeZone} phone={phone} arriving={series.loading} trouble={trouble ? `${trouble.what} did not arrive (${trouble.error?.status ? `error ${trouble.error.status}` : 'no answer'}). Shown is what was known before.` : null} onRetry={retryAll} plays={footing ? plays : null}>
-            {footing && plays.open === 'what-if' && <WhatIf draft={plays.draft} played={plays.played} present={{ gravity: gravityText(1 + footing.finalGravity.value / 1000), temperature: footing.temperatureC?.toFixed(1) ?? '20' }} onChange={plays.setDraft} onClose={plays.close} />}
+            {footing && plays.open === 'what-if' && <WhatIf draft={plays.draft} played={plays.played} present={{ gravity: (1 + footing.finalGravity.value / 1000).toFixed(3), temperature: footing.temperatureC?.toFixed(1) ?? '20' }} onChange={plays.setDraft} onClose={plays.close} />}
             {footing && plays.open === 'curve' && <OtherCurves chosen={plays.curve} words={plays.curveWords} onChoose={plays.setCurve} onClose={plays.close} />}
           </Evidence>
         </div>

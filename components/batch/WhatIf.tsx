@@ -4,6 +4,7 @@ import { useEffect, useRef } from 'react';
 import { Button } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
 import { Sentence } from '@/components/ui/Sentence';
+import { UnitField } from '@/components/units/UnitField';
 import { NOTHING_ELSE, isTouched, type Played, type WhatIfDraft } from './what-if';
 
 interface WhatIfProps {
@@ -59,11 +60,11 @@ export function WhatIf({ draft, played, present, onChange, onClose }: WhatIfProp
       </div>
       <div className="mt-3 grid gap-x-8 gap-y-4 strip:grid-cols-[minmax(0,420px)_minmax(0,1fr)]">
         <div className="grid grid-cols-2 content-start gap-x-3 gap-y-3">
-          <Field label="it stopped at" unit="SG" placeholder={present.gravity} {...set('gravity')} />
-          <Field label="it stood at" unit="°C" placeholder={present.temperature} {...set('temperature')} />
+          <UnitField measure="gravity" label="it stopped at" placeholder={present.gravity} {...set('gravity')} />
+          <UnitField measure="temperature" label="it stood at" placeholder={present.temperature} {...set('temperature')} />
           <Field className="col-span-2" label="sugar went in now" unit="g" placeholder="0" {...set('sugar')} />
-          <Field label="or must, juice, syrup" unit="L" placeholder="0" {...set('volume')} />
-          <Field label="of a gravity of" unit="SG" placeholder="1.050" {...set('liquidGravity')} />
+          <UnitField measure="volume" label="or must, juice, syrup" placeholder="0" {...set('volume')} />
+          <UnitField measure="gravity" label="of a gravity of" placeholder="1.050" {...set('liquidGravity')} />
         </div>
         <div aria-live="polite" className="min-w-0">
           {played.rows.length === 0 ? (

@@ -52,12 +52,12 @@ function read(draft: WhatIfDraft, batch: Batch, footing: Footing): { change: Wha
     return undefined;
   };
   const top = 1 + footing.level / 1000;
-  const finalGravity = span('gravity', typedGravity(draft.gravity), 0.98, top, `0.980 to ${gravityText(top)}, what it stands at now`);
+  const finalGravity = span('gravity', typedGravity(draft.gravity), 0.98, top, `0.980 to ${top.toFixed(3)}, what it stands at now`);
   const temperatureC = span('temperature', typedNumber(draft.temperature), 4, 34, '4 to 34 °C');
   const mostSugar = Math.round(MOST_SUGAR_G_PER_L * batch.volume_l);
   const sugarG = span('sugar', typedNumber(draft.sugar), 0, mostSugar, `0 to ${grams(mostSugar)}`);
   const room = batch.vessel_l - batch.volume_l;
-  const volumeL = span('volume', typedNumber(draft.volume), 0, room, room > 0 ? `the vessel has room for ${litres(room)}` : 'the vessel is full');
+  const volumeL = span('volume', typedNumber(draft.volume), 0, room, room > 0 ? `the vessel has room for ${Number(room.toFixed(2))} L` : 'the vessel is full');
   const gravity = span('liquidGravity', typedGravity(draft.liquidGravity), 0.99, 1.5, '0.990 to 1.500');
   if (volumeL !== undefined && gravity === undefined && !errors.liquidGravity && volumeL > 0) errors.liquidGravity = 'tell its gravity';
   if (sugarG && volumeL) errors.sugar = 'one or the other: sugar, or a liquid';

@@ -3,7 +3,7 @@
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { focusFirstError } from '@/components/batch/focus';
-import { typedNumber } from '@/components/batch/figures';
+import { degrees, typedNumber } from '@/components/batch/figures';
 import { Box } from '@/components/ui/Box';
 import { Button } from '@/components/ui/Button';
 import { Field, Select, TextField } from '@/components/ui/Field';
@@ -141,7 +141,7 @@ export function BottleIt({ facts, form, verdict, mayBottle, mayOverride }: Bottl
             {(places ?? []).map((one) => (
               <option key={one.id} value={one.id}>
                 {one.name}
-                {one.temperature_c === null ? '' : `, up to ${one.temperature_c} °C`}
+                {one.temperature_c === null ? '' : `, up to ${degrees(one.temperature_c)}`}
                 {one.capacity === null ? '' : `, room for ${Math.max(0, one.capacity - one.bottles)}`}
               </option>
             ))}

@@ -1,9 +1,10 @@
 'use client';
 
 import { useState, type FormEvent } from 'react';
-import { typedNumber } from '@/components/batch/figures';
+import { degrees, typedNumber } from '@/components/batch/figures';
 import { Button } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
+import { UnitField } from '@/components/units/UnitField';
 import { Haze } from '@/components/ui/Haze';
 import { FormError } from '@/components/ui/Notice';
 import { State } from '@/components/ui/StateMark';
@@ -54,7 +55,7 @@ export function Places({ mayManage }: { mayManage: boolean }) {
               <span className="type-name-low min-w-40">{place.name}</span>
               <span className="type-label text-ink2">
                 {place.capacity === null ? `${place.bottles} bottles` : `${place.bottles} of ${place.capacity} bottles`}
-                {place.temperature_c !== null && `, up to ${place.temperature_c} °C`}
+                {place.temperature_c !== null && `, up to ${degrees(place.temperature_c)}`}
               </span>
               {full && <State state="Check" word="Full" size={13} />}
               {mayManage && place.bottles === 0 && (
@@ -71,7 +72,7 @@ export function Places({ mayManage }: { mayManage: boolean }) {
         <form onSubmit={(event) => void add(event)} className="flex flex-wrap items-start gap-3 border-b px-(--margin) py-3">
           <Field label="new place" value={name} error={errors.name?.[0]} onChange={(event) => setName(event.target.value)} className="w-56" />
           <Field label="holds" unit="bottles" placeholder="any" inputMode="numeric" value={room} error={errors.capacity?.[0]} onChange={(event) => setRoom(event.target.value)} className="w-36" />
-          <Field label="warmest" unit="°C" placeholder="?" inputMode="decimal" value={warm} error={errors.temperature_c?.[0]} onChange={(event) => setWarm(event.target.value)} className="w-32" />
+          <UnitField measure="temperature" label="warmest" placeholder="?" value={warm} error={errors.temperature_c?.[0]} onChange={(event) => setWarm(event.target.value)} className="w-32" />
           <Button type="submit" className="mt-[22px]" disabled={name.trim() === ''}>
             Add
           </Button>

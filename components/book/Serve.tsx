@@ -1,7 +1,7 @@
 'use client';
 
 import { useState, type FormEvent } from 'react';
-import { typedNumber } from '@/components/batch/figures';
+import { degrees, typedNumber } from '@/components/batch/figures';
 import { sizeWords } from '@/components/bench/words';
 import { Button } from '@/components/ui/Button';
 import { Choice } from '@/components/ui/Choice';
@@ -85,7 +85,7 @@ export function Serve({ lot, onDone }: { lot: LotBody; onDone: () => void }) {
             {(places ?? []).filter((place) => place.id !== stand.place?.id).map((place) => (
               <option key={place.id} value={place.id}>
                 {place.name}
-                {place.temperature_c === null ? '' : `, up to ${place.temperature_c} °C`}
+                {place.temperature_c === null ? '' : `, up to ${degrees(place.temperature_c)}`}
                 {place.capacity === null ? '' : `, room for ${Math.max(0, place.capacity - place.bottles)}`}
               </option>
             ))}

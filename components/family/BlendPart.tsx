@@ -1,9 +1,10 @@
 'use client';
 
 import { useEffect } from 'react';
-import { litres, percent } from '@/components/batch/figures';
+import { gravityText, litres, percent } from '@/components/batch/figures';
 import { Button } from '@/components/ui/Button';
-import { Field, Select } from '@/components/ui/Field';
+import { Select } from '@/components/ui/Field';
+import { UnitField } from '@/components/units/UnitField';
 import { useDrink } from '@/lib/client/cellarwork';
 import type { BatchBody } from '@/lib/contracts/batches';
 import type { DrinkBody } from '@/lib/contracts/family';
@@ -42,7 +43,7 @@ export function BlendPart({ part, batches, errors, onChange, onDrink, onRemove }
           onChange({ batchId: event.target.value, litres: part.litres || (chosen ? String(chosen.volume_l) : '') });
         }}
         error={errors.batch}
-        hint={drink && (known ? `${litres(drink.volume_l)} at ${drink.gravity!.toFixed(3)}${drink.strength ? `, ${percent(drink.strength.balling.value.value)}` : ''}` : 'needs an original gravity and a reading first')}
+        hint={drink && (known ? `${litres(drink.volume_l)} at ${gravityText(drink.gravity!)}${drink.strength ? `, ${percent(drink.strength.balling.value.value)}` : ''}` : 'needs an original gravity and a reading first')}
       >
         <option value="">Choose</option>
         {batches.map((item) => (
@@ -51,7 +52,7 @@ export function BlendPart({ part, batches, errors, onChange, onDrink, onRemove }
           </option>
         ))}
       </Select>
-      <Field label="How much" unit="L" inputMode="decimal" autoComplete="off" value={part.litres} onChange={(event) => onChange({ litres: event.target.value })} error={errors.litres} />
+      <UnitField measure="volume" label="How much" value={part.litres} onChange={(event) => onChange({ litres: event.target.value })} error={errors.litres} />
       {onRemove && (
         <Button look="quiet" className="mt-[22px]" aria-label="Leave this part out" onClick={onRemove}>
           out

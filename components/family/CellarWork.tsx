@@ -5,7 +5,7 @@ import { useSearchParams } from 'next/navigation';
 import { useState } from 'react';
 import { Additions } from '@/components/additions/Additions';
 import { Finings } from '@/components/additions/Finings';
-import { degrees, litres, percent } from '@/components/batch/figures';
+import { degrees, gravityText, litres, percent } from '@/components/batch/figures';
 import { LinkButton } from '@/components/ui/Button';
 import { Facts } from '@/components/ui/Facts';
 import { FilterTabs } from '@/components/ui/FilterTabs';
@@ -47,8 +47,8 @@ const SULPHITE_SO_FAR: HowAnswer = how('all sulphite that the must brought and t
 function InIt({ drink }: { drink: DrinkBody }) {
   const facts = [
     { name: 'in it', says: litres(drink.volume_l) },
-    { name: 'original gravity', says: drink.effective_og?.toFixed(3) ?? 'not told', how: drink.effective_og === drink.original_gravity ? undefined : WITH_ADDITIONS(drink) },
-    { name: 'gravity', says: drink.gravity === null ? 'not read' : `${drink.gravity.toFixed(3)}${drink.gravity_by ? ` by ${drink.gravity_by}` : ''}` },
+    { name: 'original gravity', says: drink.effective_og === null ? 'not told' : gravityText(drink.effective_og), how: drink.effective_og === drink.original_gravity ? undefined : WITH_ADDITIONS(drink) },
+    { name: 'gravity', says: drink.gravity === null ? 'not read' : `${gravityText(drink.gravity)}${drink.gravity_by ? ` by ${drink.gravity_by}` : ''}` },
     { name: 'strength', says: drink.strength ? percent(drink.strength.balling.value.value) : 'not known', how: drink.strength?.balling.how },
     { name: 'temperature', says: drink.temperature_c === null ? 'not told' : degrees(drink.temperature_c) },
     { name: 'sulphite added', says: drink.sulphite_added ? `${Math.ceil(drink.total_sulphite_mg_l.hi)} mg/L at most` : 'none logged', how: drink.sulphite_added ? SULPHITE_SO_FAR : undefined },

@@ -2,13 +2,14 @@
 
 import { useState, type FormEvent } from 'react';
 import { fromLocal, toLocal } from '@/components/batch/entry-form';
-import { points, typedGravity, typedNumber } from '@/components/batch/figures';
+import { litres, points, typedGravity, typedNumber } from '@/components/batch/figures';
 import { NECK_WORDS } from '@/components/batch/words';
 import { Button } from '@/components/ui/Button';
 import { Field, Select } from '@/components/ui/Field';
 import { How } from '@/components/ui/How';
 import { FormError } from '@/components/ui/Notice';
 import { Sentence } from '@/components/ui/Sentence';
+import { UnitField } from '@/components/units/UnitField';
 import { useBatches } from '@/lib/client/batches';
 import { rackBatch, topUpBatch } from '@/lib/client/cellarwork';
 import { ClientError } from '@/lib/client/fetcher';
@@ -96,17 +97,16 @@ export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rac
   }
 
   if (moved) return <Effect moved={moved} />;
-  const field = (name: keyof typeof draft, label: string, unit?: string) => (
-    <Field label={label} {...(unit ? { unit, inputMode: 'decimal' as const } : {})} autoComplete="off" value={draft[name]} onChange={set(name)} error={errors[name]} />
-  );
+  const given = (name: keyof typeof draft) => ({ value: draft[name], onChange: set(name), error: errors[name] });
+  const field = (name: keyof typeof draft, label: string) => <Field label={label} autoComplete="off" {...given(name)} />;
   return (
     <form onSubmit={(event) => void send(event)} noValidate className="flex max-w-[600px] flex-col gap-4">
       {rack && (
         <>
-          {field('left', 'Left on the lees and in the hose', 'L')}
+          <UnitField measure="volume" label="Left on the lees and in the hose" {...given('left')} />
           <fieldset className="grid grid-cols-2 gap-3">
             <legend className="type-verdict mb-2">Into another vessel, where it changed</legend>
-            {field('vessel', `It holds (was ${batch.vessel_l})`, 'L')}
+            <UnitField measure="volume" label={`It holds (was ${litres(batch.vessel_l)})`} {...given('vessel')} />
             {field('tag', `Tag (was ${batch.tag ?? 'none'})`)}
             {field('place', 'Place')}
             <Select label="The neck now" value={draft.neck} onChange={set('neck')}>
@@ -129,9 +129,9 @@ export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rac
           <option value="batch">another batch here</option>
           <option value="drink">a drink from elsewhere</option>
         </Select>
-        {draft.what !== '' && field('topUp', 'How much', 'L')}
-        {(draft.what === 'must' || draft.what === 'drink') && field('gravity', 'Its gravity', 'SG')}
-        {draft.what === 'drink' && field('original', 'Its original gravity', 'SG')}
+        {draft.what !== '' && <UnitField measure="volume" label="How much" {...given('topUp')} />}
+        {(draft.what === 'must' || draft.what === 'drink') && <UnitField measure="gravity" label="Its gravity" {...given('gravity')} />}
+        {draft.what === 'drink' && <UnitField measure="gravity" label="Its original gravity" {...given('original')} />}
         {draft.what === 'batch' && (
           <Select label="Which batch" className="col-span-full" value={draft.from} onChange={set('from')} error={errors.from}>
             <option value="">Choose</option>
@@ -147,7 +147,7 @@ export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rac
       </fieldset>
       {rack && (
         <>
-          {field('sulphite', 'Potassium metabisulphite with it', 'g')}
+          <Field label="Potassium metabisulphite with it" unit="g" inputMode="decimal" autoComplete="off" {...given('sulphite')} />
           <p className="type-reason text-ink2">The sulphite dose stands under Additions. Keep air out: a full vessel and a hose that reaches the bottom. Lift a full glass vessel with both hands, one under it, never by its neck; nothing hot into cold glass.</p>
         </>
       )}

@@ -8,6 +8,7 @@ import { Button } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
 import { Sentence } from '@/components/ui/Sentence';
+import { UnitField } from '@/components/units/UnitField';
 import { splitBatch } from '@/lib/client/cellarwork';
 import type { BatchBody } from '@/lib/contracts/batches';
 import { splitForm } from '@/lib/contracts/family';
@@ -67,7 +68,7 @@ export function SplitForm({ batch, now, timeZone }: { batch: BatchBody; now: num
       {parts.map((part, index) => (
         <fieldset key={part.key} className="grid grid-cols-2 gap-3 border-b pb-4">
           <legend className="type-verdict mb-2">Into vessel {index + 1}</legend>
-          <Field className="col-span-full" label="How much goes in" unit="L" inputMode="decimal" autoComplete="off" value={part.litres} onChange={(event) => change(part.key, { litres: event.target.value })} error={errors[`parts.${index}.volume_l`]} />
+          <UnitField measure="volume" className="col-span-full" label="How much goes in" value={part.litres} onChange={(event) => change(part.key, { litres: event.target.value })} error={errors[`parts.${index}.volume_l`]} />
           <VesselFields draft={part.vessel} errors={errors} prefix={`parts.${index}`} onChange={(vessel) => change(part.key, { vessel })} />
           {parts.length > 1 && (
             <Button look="quiet" className="justify-self-start" onClick={() => setParts((before) => before.filter((item) => item.key !== part.key))}>
@@ -81,7 +82,7 @@ export function SplitForm({ batch, now, timeZone }: { batch: BatchBody; now: num
           Another vessel
         </Button>
       )}
-      <Field label="Lost on the way" unit="L" inputMode="decimal" autoComplete="off" value={lost} onChange={(event) => setLost(event.target.value)} error={errors.lost_l} />
+      <UnitField measure="volume" label="Lost on the way" value={lost} onChange={(event) => setLost(event.target.value)} error={errors.lost_l} />
       {Number.isFinite(stays) && (
         <p role="status" className={`type-body border-l-[3px] pl-3 ${stays < -1e-6 ? 'border-madder' : 'border-rule2'}`}>
           <Sentence>{stays < -1e-6 ? `${litres(taken)} are asked of ${litres(batch.volume_l)}.` : stays < 0.005 ? `Nothing stays in ${batch.name}: its log ends.` : `${litres(stays)} stays in ${batch.name}.`}</Sentence>

@@ -1,6 +1,7 @@
 import { NECK_WORDS } from '@/components/batch/words';
 import { typedNumber } from '@/components/batch/figures';
 import { Field, Select } from '@/components/ui/Field';
+import { UnitField } from '@/components/units/UnitField';
 import { VESSEL_KINDS } from '@/lib/contracts/batches';
 import { NECKS } from '@/lib/core/types';
 import type { PathErrors } from '@/lib/client/use-send';
@@ -42,7 +43,7 @@ export function VesselFields({ draft, errors, prefix, onChange }: { draft: Vesse
           <option key={kind}>{kind}</option>
         ))}
       </Select>
-      <Field label="It holds, brim full" unit="L" inputMode="decimal" autoComplete="off" value={draft.holds} onChange={set('holds')} error={at('vessel_l')} />
+      <UnitField measure="volume" label="It holds, brim full" value={draft.holds} onChange={set('holds')} error={at('vessel_l')} />
       <Select label="What closes the neck" value={draft.neck} onChange={set('neck')} error={at('neck')}>
         {NECKS.map((neck) => (
           <option key={neck} value={neck}>

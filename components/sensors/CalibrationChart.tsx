@@ -1,6 +1,7 @@
 'use client';
 
 import { useId, useRef } from 'react';
+import { gravityName, gravityNumber } from '@/components/ui/units';
 import { useWidth } from '@/components/ui/width';
 import { feltAt } from '@/lib/core/calibration/apply';
 import type { CalibrationFit, CalibrationPoint } from '@/lib/core/calibration/calibrate';
@@ -45,7 +46,7 @@ export function CalibrationChart({ points, fit, correctsTemperature }: { points:
           <g key={tick}>
             <path d={`M${LEFT} ${y(tick)}H${width - RIGHT}`} stroke="var(--rule)" />
             <text x={LEFT - 8} y={y(tick) + 4} textAnchor="end" fill="var(--ink2)">
-              {tick.toFixed(3)}
+              {gravityNumber(tick)}
             </text>
           </g>
         ))}
@@ -53,7 +54,7 @@ export function CalibrationChart({ points, fit, correctsTemperature }: { points:
           <path key={tick} d={`M${x(tick)} 22V${HEIGHT - 4}`} stroke="var(--rule)" />
         ))}
         <text x={LEFT + 6} y={14} fill="var(--ink)" fontWeight="600">
-          known gravity{correctsTemperature ? ', as felt' : ''}
+          known gravity{gravityName()}{correctsTemperature ? ', as felt' : ''}
         </text>
         {paths && (
           <>
@@ -67,7 +68,7 @@ export function CalibrationChart({ points, fit, correctsTemperature }: { points:
             <circle cx={x(point.inclination)} cy={y(known(point))} r="5.5" fill="var(--sheet)" stroke={point.used ? 'var(--ink)' : 'var(--ink3)'} strokeWidth="1.6" strokeDasharray={point.used ? undefined : '2.4 2.2'} />
             {labelled[index] && (
               <text x={x(point.inclination) - 8} y={y(known(point)) - 9} textAnchor={x(point.inclination) > LEFT + 60 ? 'end' : 'start'} fill={point.used ? 'var(--ink)' : 'var(--ink3)'}>
-                {point.gravity.toFixed(3)}
+                {gravityNumber(point.gravity)}
               </text>
             )}
           </g>

@@ -2,6 +2,7 @@
 
 import { Box } from '@/components/ui/Box';
 import { Button } from '@/components/ui/Button';
+import { gravityText, temperatureText } from '@/components/ui/units';
 import type { CalibrationPointBody } from '@/lib/contracts/calibration';
 import type { CalibrationFit } from '@/lib/core/calibration/calibrate';
 import { signedPoints } from './words';
@@ -41,7 +42,7 @@ export function CalibrationPoints({ points, fit, mayChange, onUse, onRemove }: {
             <tr key={point.id} className={`border-b border-rule ${point.used ? '' : 'text-ink3'}`}>
               <td className="py-1.5 pl-(--margin)">
                 <span className="flex items-center gap-3">
-                  {mayChange && <Box ticked={point.used} onTick={(ticked) => onUse(point.id, ticked)} label={`${SOURCE[point.source]} ${point.gravity.toFixed(3)} counts`} />}
+                  {mayChange && <Box ticked={point.used} onTick={(ticked) => onUse(point.id, ticked)} label={`${SOURCE[point.source]} ${gravityText(point.gravity)} counts`} />}
                   <span className="min-w-0">
                     {SOURCE[point.source]}
                     {point.sugar_g_per_l !== null && ` ${Math.round(point.sugar_g_per_l)} g/L`}
@@ -49,15 +50,15 @@ export function CalibrationPoints({ points, fit, mayChange, onUse, onRemove }: {
                   </span>
                 </span>
               </td>
-              <td className="whitespace-nowrap py-1.5 pl-3 text-right font-semibold">{point.gravity.toFixed(3)}</td>
+              <td className="whitespace-nowrap py-1.5 pl-3 text-right font-semibold">{gravityText(point.gravity)}</td>
               <td className="whitespace-nowrap py-1.5 pl-3 text-right">{point.inclination.toFixed(1)}°</td>
-              <td className="whitespace-nowrap py-1.5 pl-3 text-right max-strip:hidden">{point.temperature.toFixed(0)} °C</td>
+              <td className="whitespace-nowrap py-1.5 pl-3 text-right max-strip:hidden">{temperatureText(point.temperature, 0)}</td>
               <td className="whitespace-nowrap py-1.5 pl-3 text-right" title={result?.missedBy == null ? undefined : `without it the curve would miss it by ${signedPoints(result.missedBy)} points`}>
                 {result ? signedPoints(result.leftOver) : '–'}
               </td>
               <td className="py-1 pl-3 pr-(--margin) text-right">
                 {mayChange && (
-                  <Button size="lane" look="quiet" aria-label={`Strike out ${point.gravity.toFixed(3)} at ${point.inclination.toFixed(1)} degrees`} onClick={() => onRemove(point.id)}>
+                  <Button size="lane" look="quiet" aria-label={`Strike out ${gravityText(point.gravity)} at ${point.inclination.toFixed(1)} degrees`} onClick={() => onRemove(point.id)}>
                     ×
                   </Button>
                 )}

@@ -4,6 +4,7 @@ import { dayName } from '@/components/charts/zone';
 import { Button } from '@/components/ui/Button';
 import { FormError } from '@/components/ui/Notice';
 import { GroupBar } from '@/components/ui/Page';
+import { gravityText } from '@/components/ui/units';
 import type { CalibrationBody } from '@/lib/contracts/calibration';
 import { pairPoint } from '@/lib/client/calibration';
 import { useWork } from './use-work';
@@ -20,7 +21,7 @@ export function Candidates({ sensor, candidates, timeZone }: { sensor: string; c
         {candidates.map((candidate) => (
           <li key={candidate.entry_id} className="flex flex-wrap items-center gap-x-4 gap-y-1 border-b border-rule px-(--margin) py-2 font-mono text-[0.8125rem]">
             <span className="min-w-0 flex-1 break-words">
-              <b className="font-semibold">{candidate.gravity.toFixed(3)}</b> at {candidate.inclination.toFixed(1)}°<span className="type-label block text-ink2">
+              <b className="font-semibold">{gravityText(candidate.gravity)}</b> at {candidate.inclination.toFixed(1)}°<span className="type-label block text-ink2">
                 {dayName(Date.parse(candidate.at) / 1000, timeZone)}, {candidate.batch}
               </span>
             </span>

@@ -5,6 +5,8 @@ import { Button } from '@/components/ui/Button';
 import { Choice } from '@/components/ui/Choice';
 import { Field } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
+import { Sentence } from '@/components/ui/Sentence';
+import { UnitField } from '@/components/units/UnitField';
 import { calibrationPointForm, type CalibrationBody } from '@/lib/contracts/calibration';
 import { addPoint } from '@/lib/client/calibration';
 import { readNumber } from './numbers';
@@ -51,12 +53,14 @@ export function PointForm({ sensor, last }: { sensor: string; last: CalibrationB
     <form noValidate onSubmit={(event) => void submit(event)} className="flex flex-col gap-3 bg-desk px-(--margin) py-4">
       {failed && <FormError>{failed}</FormError>}
       <Choice label="the float is in" value={way} onChoose={setWay} options={WAYS} className="max-w-[420px]" />
-      <p className="type-reason -mt-1.5 text-ink2">{HINTS[way]}</p>
+      <p className="type-reason -mt-1.5 text-ink2">
+        <Sentence>{HINTS[way]}</Sentence>
+      </p>
       <div className="flex flex-wrap items-start gap-3">
         {way === 'sugar' && <Field label="sugar in a litre" inputMode="decimal" unit="g/L" value={values.sugar} onChange={set('sugar')} error={fields.sugar_g_per_l?.[0] ?? fields.gravity?.[0]} className="w-40" />}
-        {way === 'hydrometer' && <Field label="gravity at 20 °C" inputMode="decimal" value={values.gravity} onChange={set('gravity')} error={fields.gravity?.[0]} className="w-40" />}
+        {way === 'hydrometer' && <UnitField measure="gravity" label={<Sentence>gravity at 20 °C</Sentence>} value={values.gravity} onChange={set('gravity')} error={fields.gravity?.[0]} className="w-40" />}
         <Field label="it leans" inputMode="decimal" unit="°" value={values.inclination} onChange={set('inclination')} error={fields.inclination?.[0]} className="w-36" />
-        <Field label="the liquid is" inputMode="decimal" unit="°C" value={values.temperature} onChange={set('temperature')} error={fields.temperature?.[0]} className="w-32" />
+        <UnitField measure="temperature" label="the liquid is" value={values.temperature} onChange={set('temperature')} error={fields.temperature?.[0]} className="w-32" />
       </div>
       <div className="flex flex-wrap items-center gap-2">
         <Button type="submit" disabled={busy}>

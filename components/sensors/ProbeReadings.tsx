@@ -4,6 +4,7 @@ import { useRef } from 'react';
 import { when } from '@/components/charts/zone';
 import { Haze } from '@/components/ui/Haze';
 import { GroupBar } from '@/components/ui/Page';
+import { temperatureName, temperatureNumber } from '@/components/ui/units';
 import { useWidth } from '@/components/ui/width';
 import type { SensorBody } from '@/lib/contracts/sensors';
 import { useRawReadings } from '@/lib/client/sensors';
@@ -18,11 +19,12 @@ export function ProbeReadings({ sensor, now, timeZone }: { sensor: SensorBody; n
   const frame = useRef<HTMLDivElement>(null);
   const width = Math.max(288, useWidth(frame, 720));
   const foam = sensor.kind === 'foam';
-  const unit = foam ? 'mm' : '°C';
+  const unit = foam ? 'mm' : temperatureName();
+  const read = (kept: number) => (foam ? kept : Number(temperatureNumber(kept, 2).replace('−', '-')));
   const said = (data?.items ?? [])
     .flatMap((reading) => {
       const value = foam ? reading.foam : reading.temperature;
-      return value === null ? [] : [{ at: Date.parse(reading.measured_at) / 1000, value }];
+      return value === null ? [] : [{ at: Date.parse(reading.measured_at) / 1000, value: read(value) }];
     })
     .reverse();
   const [first, last] = [said[0], said.at(-1)];

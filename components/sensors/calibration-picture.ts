@@ -1,4 +1,5 @@
 import type { CalibrationFit } from '@/lib/core/calibration/calibrate';
+import { gravityText } from '@/components/ui/units';
 
 /** Where things stand in the picture, px. */
 export interface Frame {
@@ -49,7 +50,7 @@ export function curvePaths(fit: CalibrationFit, x: (degrees: number) => number, 
 /** The picture in one sentence, for those who hear the page. */
 export function pictureWords(fit: CalibrationFit): string {
   const points = (gravity: number) => `${(gravity * 1000).toFixed(1)} points`;
-  return `Curve of degree ${fit.degree} through ${fit.points.length} points from ${fit.gravityLow.toFixed(3)} at ${fit.low.toFixed(1)}° to ${fit.gravityHigh.toFixed(3)} at ${fit.high.toFixed(1)}°; largest left over ${points(Math.max(...fit.points.map((point) => Math.abs(point.leftOver))))}.`;
+  return `Curve of degree ${fit.degree} through ${fit.points.length} points from ${gravityText(fit.gravityLow)} at ${fit.low.toFixed(1)}° to ${gravityText(fit.gravityHigh)} at ${fit.high.toFixed(1)}°; largest left over ${points(Math.max(...fit.points.map((point) => Math.abs(point.leftOver))))}.`;
 }
 
 /** Which labels have room: from the left, each at least so far from the last one shown, px. */
