@@ -38,7 +38,7 @@ export function BottleTable({ verdict }: { verdict: BenchVerdict }) {
         </span>
       </div>
       {bottles.length > 0 && (
-        <div className="overflow-x-auto" tabIndex={0} role="region" aria-label="Every bottle">
+        <div className="relative overflow-x-auto" tabIndex={0} role="region" aria-label="Every bottle">
           <table className="type-label w-full min-w-[640px] border-t text-left">
             <thead>
               <tr className="bg-desk text-ink2 [&>th]:px-2 [&>th]:py-1 [&>th]:font-medium [&>th:first-child]:pl-(--margin)">

@@ -16,8 +16,6 @@ import { How } from '@/components/ui/How';
 import { ErrorState, FormError } from '@/components/ui/Notice';
 import { useNow } from '@/components/ui/now';
 import { GroupBar, PageHead } from '@/components/ui/Page';
-import { Sentence } from '@/components/ui/Sentence';
-import { State } from '@/components/ui/StateMark';
 import { gravityText } from '@/components/ui/units';
 import { ClientError } from '@/lib/client/fetcher';
 import { undoOpening, useLot } from '@/lib/client/lots';
@@ -25,6 +23,7 @@ import { useMe } from '@/lib/client/me';
 import type { LotBody } from '@/lib/contracts/lots';
 import { BOTTLES, CLOSURE_CATALOGUE } from '@/lib/core/bottling/bottles';
 import { BenchRecord } from './BenchRecord';
+import { Caution, Lifted } from './Caution';
 import { EditLot } from './EditLot';
 import { Serve } from './Serve';
 import { costWords, dayWords, leftWords, money, OPENING_WORDS, SPARKLE_WORDS, strengthWords } from './words';
@@ -66,14 +65,7 @@ export function LotPage({ id }: { id: string }) {
           Compare
         </LinkButton>
       </PageHead>
-      {lot.caution && (
-        <section aria-label="Caution" className="border-b border-l-[10px] border-l-madder bg-lit px-(--margin) py-3">
-          <State state="Stop" word="Caution" />
-          <p className="type-verdict-now">
-            <Sentence strong>{lot.caution}</Sentence>
-          </p>
-        </section>
-      )}
+      <Caution lot={lot} mayLift={may('lots.override')} />
       <Facts facts={factsOf(lot, day)} columns="grid-cols-2 strip:grid-cols-4 wide:grid-cols-8" />
       {lot.note && <p className="type-body border-b px-(--margin) py-2 break-words">{lot.note}</p>}
       <div className="border-b px-(--margin) py-2">
@@ -87,6 +79,7 @@ export function LotPage({ id }: { id: string }) {
         </div>
         <div className="min-w-0 wide:border-l">
           <BenchRecord lot={lot} day={day} />
+          <Lifted lot={lot} day={day} />
           {may('shares.manage') && <Shares batchId={lot.batch.id} day={day} />}
         </div>
       </div>
@@ -187,6 +180,7 @@ function Openings({ lot, day, mayUndo }: { lot: LotBody; day: (at: string) => st
             <span>
               {move.count} × {sizeWords(move.size_ml)} from {move.from?.name ?? 'no named place'} to {move.to?.name ?? 'no named place'}
             </span>
+            {move.override_reason && <span className="type-reason text-madder">against a stop: {move.override_reason}</span>}
             <span className="ml-auto text-ink2">{move.by?.name}</span>
           </li>
         ))}

@@ -181,12 +181,13 @@ export interface MoveRow {
   sizeMl: number;
   count: number;
   by: { id: string; name: string } | null;
+  overrideReason: string | null;
 }
 
 /** Moves of a lot's bottles, newest first. */
 export function movesOfLot(lotId: string, transaction?: Transaction): Promise<MoveRow[]> {
   return database().query<MoveRow>(
-    `select m.at, lb.size_ml as "sizeMl", m.count,
+    `select m.at, lb.size_ml as "sizeMl", m.count, m.override_reason as "overrideReason",
        case when f.id is not null then json_build_object('id', f.id, 'name', f.name) end as "from",
        case when t.id is not null then json_build_object('id', t.id, 'name', t.name) end as "to",
        case when p.id is not null then json_build_object('id', p.id, 'name', p.name) end as by
@@ -201,6 +202,23 @@ export async function writeMove(move: { cellarId: string; lotId: string; lotBott
     `insert into bottle_moves (cellar_id, lot_id, lot_bottle_id, from_place, to_place, count, at, person_id, override_reason)
      values ($cellarId, $lotId, $lotBottleId, $fromPlace, $toPlace, $count, $at, $personId, $overrideReason)`,
     { bind: move, transaction },
+  );
+}
+
+export interface LiftedRow {
+  at: Date;
+  caution: string;
+  reason: string;
+  by: { id: string; name: string } | null;
+}
+
+/** Cautions that were taken off a lot, newest first: the trail is their history. */
+export function liftedOfLot(cellarId: string, lotId: string, transaction?: Transaction): Promise<LiftedRow[]> {
+  return database().query<LiftedRow>(
+    `select a.at, a.detail->>'caution' as caution, a.detail->>'reason' as reason, case when p.id is not null then json_build_object('id', p.id, 'name', p.name) end as by
+     from audit a left join people p on p.id = a.person_id
+     where a.cellar_id = $cellarId and a.subject = $lotId and a.action = 'lot.caution-lifted' order by a.at desc, a.id desc limit 50`,
+    { bind: { cellarId, lotId }, type: QueryTypes.SELECT, transaction },
   );
 }
 

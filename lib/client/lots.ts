@@ -44,6 +44,7 @@ export function useLot(id: string | null) {
 export const updateLot = async (id: string, input: UpdateLot) => changed(await sendJson<LotBody>('PATCH', `/lots/${id}`, input));
 export const moveBottles = async (id: string, input: Omit<MoveBottles, 'override_reason'> & { override_reason?: string | null }) => changed(await sendJson<LotBody>('POST', `/lots/${id}/move`, input));
 export const openBottles = async (id: string, input: z.input<typeof openSchema>) => changed(await sendJson<LotBody>('POST', `/lots/${id}/openings`, { ...input, client_id: input.client_id ?? crypto.randomUUID() }));
+export const liftCaution = async (lotId: string, reason: string) => changed(await sendJson<LotBody>('POST', `/lots/${lotId}/lift-caution`, { reason }));
 export const undoOpening = async (lotId: string, openingId: string) => changed(await sendJson<null>('DELETE', `/lots/${lotId}/openings/${openingId}`));
 
 export function usePlaces() {

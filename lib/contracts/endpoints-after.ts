@@ -4,7 +4,7 @@ import { id } from './common';
 import { compareQuery, compareSchema } from './compare';
 import { byId, endpoint } from './endpoint';
 import { labelFacts, labelQuery } from './labels';
-import { lotList, lotQuery, lotSchema, moveBottles, openBottles, placeForm, placeList, placeSchema, updateLot, updatePlaceForm } from './lots';
+import { liftCaution, lotList, lotQuery, lotSchema, moveBottles, openBottles, placeForm, placeList, placeSchema, updateLot, updatePlaceForm } from './lots';
 import { byToken, createShare, sharedBatch, shareList, shareSchema, tastingTaken } from './shares';
 import { createTasting, guestTasting, tastingList, tastingSchema } from './tastings';
 
@@ -18,6 +18,7 @@ export const endpointsAfter = {
   exportLots: endpoint({ method: 'GET', path: '/lots.csv', summary: 'The cellar book as CSV', access: 'lots.read', query: lotQuery, response: null, status: 200 }),
   getLot: endpoint({ method: 'GET', path: '/lots/{id}', summary: 'One lot: where it stands, what became of it', access: 'lots.read', params: byId, response: lotSchema, status: 200 }),
   updateLot: endpoint({ method: 'PATCH', path: '/lots/{id}', summary: 'Name, code, note, ready from, and what to do otherwise next time', access: 'lots.update', params: byId, body: updateLot, response: lotSchema, status: 200 }),
+  liftCaution: endpoint({ method: 'POST', path: '/lots/{id}/lift-caution', summary: 'Take a caution off a lot, with a brewer’s written reason that stays in its history', access: 'lots.override', params: byId, body: liftCaution, response: lotSchema, status: 200 }),
   moveBottles: endpoint({ method: 'POST', path: '/lots/{id}/move', summary: 'Move bottles to another place, if it has room and is not too warm', access: 'lots.serve', params: byId, body: moveBottles, response: lotSchema, status: 200 }),
   openBottles: endpoint({ method: 'POST', path: '/lots/{id}/openings', summary: 'Opened, given away, broken, or gushed', access: 'lots.serve', params: byId, body: openBottles, response: lotSchema, status: 201 }),
   undoOpening: endpoint({ method: 'DELETE', path: '/lots/{id}/openings/{openingId}', summary: 'Put a bottle back that was not opened after all', access: 'lots.serve', params: z.object({ id, openingId: id }), response: null, status: 204 }),

@@ -80,7 +80,10 @@ export const lotSchema = z.object({
   ...lotFields,
   bottles: z.array(lotBottleSchema),
   openings: z.array(openingSchema),
-  moves: z.array(z.object({ at: z.string(), from: placeName, to: placeName, size_ml: z.number(), count: z.number().int(), by: who })),
+  /** A reason: they went against a stop, and why. */
+  moves: z.array(z.object({ at: z.string(), from: placeName, to: placeName, size_ml: z.number(), count: z.number().int(), by: who, override_reason: z.string().nullable() })),
+  /** Cautions that a brewer took off again, newest first. */
+  lifted: z.array(z.object({ caution: z.string(), reason: z.string(), by: who, at: z.string() })),
   bench: z.object({
     verdict: z.enum(['safe', 'overridden']),
     headline: z.string(),
@@ -133,6 +136,10 @@ export const updateLot = z.object({
   next_time: text(500).nullable().optional(),
 });
 export type UpdateLot = z.infer<typeof updateLot>;
+
+/** `POST /api/v1/lots/{id}/lift-caution`. */
+export const liftCaution = z.object({ /** Why it is no longer needed; stays in the lot's history. */ reason: text(1000) });
+export type LiftCaution = z.infer<typeof liftCaution>;
 
 const bottles = z.number('must be a number of bottles').int('must be whole bottles').min(1, 'must be at least 1').max(10_000);
 

@@ -265,6 +265,24 @@ describe('a filled bottle', () => {
     await expect(bottle(brewer, await ciderAt(brewer), { place_id: hot.id })).rejects.toThrow(/warmer/);
   });
 
+  it('keeps the reason for which it was filled against a stop when it is moved against another; the move has its own', async () => {
+    const brewer = await buildMember('brewer');
+    const batch = await ciderAt(brewer, { fg: 1.012 });
+    const lot = await bottle(brewer, batch, { bottles: [beerBottle({ confirmed_bar: 4 })], priming: { way: 'none' }, warmest_store_c: 14, override_reason: REASON });
+    const attic = await createPlace(brewer, { name: 'attic', capacity: null, temperature_c: 30 });
+    const other = 'The cool corner floods this week; two days only.';
+    const moved = await moveBottles(brewer, lot.id, { bottle_id: lot.bottles[0]!.id, from_place_id: null, to_place_id: attic.id, count: 2, override_reason: other }, clockAt());
+    expect(moved.override).toMatchObject({ reason: REASON });
+    expect(moved.moves[0]).toMatchObject({ override_reason: other });
+    expect(moved.caution).toMatch(/^Bottled against a stop.*Moved against a stop/s);
+    // What was put aside once is no leave for more: the place does not get warmer under them.
+    await expect(updatePlace(brewer, attic.id, { temperature_c: 35 })).rejects.toThrow(/first/);
+    await expect(updatePlace(brewer, attic.id, { temperature_c: 28 })).resolves.toMatchObject({ temperature_c: 28 });
+    const unsaid = await createPlace(brewer, { name: 'cupboard', capacity: null, temperature_c: null });
+    await moveBottles(brewer, lot.id, { bottle_id: lot.bottles[0]!.id, from_place_id: null, to_place_id: unsaid.id, count: 1, override_reason: null }, clockAt());
+    await expect(updatePlace(brewer, unsaid.id, { temperature_c: 35 })).rejects.toThrow(/first/);
+  });
+
   it('keeps its rating: nothing that can be changed of a lot touches what was judged', async () => {
     const brewer = await buildMember('brewer');
     const lot = await tight(brewer);

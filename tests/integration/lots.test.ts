@@ -5,6 +5,7 @@ import { ConflictError, ForbiddenError, InvalidError, NotFoundError } from '@/li
 import { bottleBatch } from '@/lib/services/bench/bottle';
 import { cell, exportLots } from '@/lib/services/lots/export';
 import { getLot } from '@/lib/services/lots/get';
+import { liftCaution } from '@/lib/services/lots/lift';
 import { listLots } from '@/lib/services/lots/list';
 import { moveBottles } from '@/lib/services/lots/move';
 import { openBottles, undoOpening } from '@/lib/services/lots/open';
@@ -82,6 +83,33 @@ describe('a bottle', () => {
     await undoOpening(brewer, lot.id, gushed.openings[0]!.id, clock);
     expect((await getLot(brewer, lot.id, clock)).caution).toMatch(/gushed/);
     expect((await listLots(brewer, lotQuery.parse({ state: 'caution' }), clock)).items).toHaveLength(1);
+  });
+
+  it('loses its caution to a brewer’s written reason alone; what was lifted stays in its history, and the next gush sets it anew', async () => {
+    const brewer = await buildMember('brewer', { name: 'Ada' });
+    const hand = await buildMember('hand', { cellarId: brewer.cellarId });
+    const lot = await bottled(brewer);
+    const why = 'All vented and chilled; three test bottles since were calm.';
+    const gush = () => openBottles(brewer, lot.id, opened(lot.bottles[0]!.id, { kind: 'gushed' }), clock);
+    await expect(liftCaution(brewer, lot.id, { reason: why }, clock)).rejects.toBeInstanceOf(ConflictError);
+    const cautioned = await gush();
+    await expect(liftCaution(hand, lot.id, { reason: why }, clock)).rejects.toBeInstanceOf(ForbiddenError);
+    await expect(liftCaution(brewer, lot.id, { reason: 'fine.....................' }, clock)).rejects.toBeInstanceOf(InvalidError);
+    const lifted = await liftCaution(brewer, lot.id, { reason: why }, clock);
+    expect(lifted.caution).toBeNull();
+    expect(lifted.lifted).toEqual([{ caution: cautioned.caution, reason: why, by: { id: brewer.personId, name: 'Ada' }, at: expect.any(String) }]);
+    expect((await gush()).caution).toMatch(/gushed/);
+    expect((await getLot(hand, lot.id, clock)).lifted).toHaveLength(1);
+    const other = await buildMember('keeper');
+    await expect(liftCaution(other, lot.id, { reason: why }, clock)).rejects.toBeInstanceOf(NotFoundError);
+  });
+
+  it('filled against a stop keeps that, and why, when its caution is lifted', async () => {
+    const brewer = await buildMember('brewer');
+    const reason = 'Tested glass of my own, kept at four degrees.';
+    const lot = await bottled(brewer, { override_reason: reason }, { fg: 1.015 });
+    const lifted = await liftCaution(brewer, lot.id, { reason: 'Every bottle was opened, vented and closed again.' }, clock);
+    expect(lifted).toMatchObject({ caution: null, overridden: true, override: { reason }, bench: { verdict: 'overridden' } });
   });
 
   it('of another cellar is nowhere', async () => {

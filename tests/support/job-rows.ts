@@ -56,6 +56,7 @@ export const jobRows: Record<Exclude<keyof typeof endpointsBefore | keyof typeof
   exportLots: { may: EVERYBODY, good: 200, path: () => '/lots.csv' },
   getLot: { may: EVERYBODY, good: 200, names: true, path: (t) => `/lots/${t.lotId}` },
   updateLot: { may: BREWERS, good: 200, names: true, path: (t) => `/lots/${t.lotId}`, body: () => ({ name: 'Renamed' }) },
+  liftCaution: { may: BREWERS, good: 200, names: true, path: (t) => `/lots/${t.lotId}/lift-caution`, body: () => ({ reason: 'Three test bottles since, none of them gushed.' }) },
   moveBottles: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/lots/${t.lotId}/move`, body: (t) => ({ bottle_id: t.bottleId, from_place_id: null, to_place_id: t.placeId, count: 1 }) },
   openBottles: { may: NOT_GUESTS, good: 201, names: true, path: (t) => `/lots/${t.lotId}/openings`, body: (t) => ({ at: at(), kind: 'opened', bottle_id: t.bottleId, place_id: null }) },
   undoOpening: { may: NOT_GUESTS, good: 204, names: true, path: (t) => `/lots/${t.lotId}/openings/${t.openingId}` },

@@ -1,4 +1,4 @@
-import { Entry, Job, Tasting } from '@/db/models';
+import { Entry, Job, Lot, Tasting } from '@/db/models';
 import type { Actor } from '@/lib/auth/policies';
 import { catalogueForm } from '@/lib/contracts/catalogue';
 import { finingForm } from '@/lib/contracts/family';
@@ -43,6 +43,7 @@ export async function jobThings(brewer: Actor, personId: string): Promise<JobThi
   const other = await ciderAt(brewer, { now, volumeL: 2 });
   const lot = await bottleBatch(brewer, bottled.id, bottleForm({ at: isoAt(now) }));
   const opened = await openBottles(brewer, lot.id, openForm.parse({ at: isoAt(now), kind: 'opened', bottle_id: lot.bottles[0]!.id, place_id: null }));
+  await Lot.update({ caution: 'A bottle gushed.' }, { where: { id: lot.id } });
   const item = await addToCatalogue(brewer, ITEM);
   const entry = await Entry.create({ cellarId, batchId: finished.id, kind: 'note', at: new Date(LONG_AGO), text: 'x', personId });
   const job = await Job.create({ cellarId, kind: 'other', title: 'Look', source: 'person', dueAt: new Date(now), createdBy: personId });

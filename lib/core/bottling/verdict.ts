@@ -55,6 +55,8 @@ function headlineOf(problems: readonly Problem[]): string {
 
 /** Shortest reason that says something. Our own rule. */
 export const REASON_MIN_LETTERS = 12;
+/** Letters of a written reason; dots and digits say nothing. */
+export const lettersIn = (reason: string): number => (reason.match(/\p{L}/gu) ?? []).length;
 
 export interface OverrideRefused {
   verdict: 'refused';
@@ -80,7 +82,7 @@ export function overrideStop(request: BenchRequest, written: WrittenReason): Ben
   const { problems } = worked;
   if (problems.length === 0) return { verdict: 'refused', why: 'nothing_to_override', problems };
   if (problems.some((p) => !p.overridable)) return { verdict: 'refused', why: 'never', problems };
-  if ((written.reason.match(/\p{L}/gu) ?? []).length < REASON_MIN_LETTERS) return { verdict: 'refused', why: 'reason_too_short', problems };
+  if (lettersIn(written.reason) < REASON_MIN_LETTERS) return { verdict: 'refused', why: 'reason_too_short', problems };
   return {
     verdict: 'overridden',
     headline: headlineOf(problems),

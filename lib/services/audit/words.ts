@@ -69,6 +69,7 @@ const SAYS: Record<string, Says> = {
   'lot.bottled': (d) => `bottled the lot ${text(d.code)}`,
   'lot.updated': () => 'changed a lot',
   'lot.moved': () => 'moved bottles',
+  'lot.caution-lifted': (d) => `took the caution off the lot ${text(d.code)}`,
   'lot.opened': (d) => `opened ${text(d.count)} of a lot`,
   'lot.given': (d) => `gave away ${text(d.count)} of a lot`,
   'tasting.written': () => 'wrote a tasting note',

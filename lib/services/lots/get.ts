@@ -1,6 +1,6 @@
 import type { Transaction } from 'sequelize';
 import { LotBottle } from '@/db/models';
-import { findLots, movesOfLot, nextTimeOfLot, openingsOfLot, standsOfLot } from '@/db/queries/lots';
+import { findLots, liftedOfLot, movesOfLot, nextTimeOfLot, openingsOfLot, standsOfLot } from '@/db/queries/lots';
 import { authorize } from '@/lib/auth/authorize';
 import { may, type Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
@@ -17,7 +17,8 @@ export async function getLot(actor: Actor, id: string, clock: Clock = systemCloc
   const stands = await standsOfLot(id, transaction);
   const openings = await openingsOfLot(id, transaction);
   const moves = await movesOfLot(id, transaction);
-  const body = presentWhole(row, { bottles, stands, openings, moves, nextTime: await nextTimeOfLot(id, transaction) }, clock.now());
+  const lifted = await liftedOfLot(actor.cellarId, id, transaction);
+  const body = presentWhole(row, { bottles, stands, openings, moves, lifted, nextTime: await nextTimeOfLot(id, transaction) }, clock.now());
   // Whom a bottle was given to is the household's matter.
   return may(actor.role, 'lots.serve') ? body : { ...body, openings: body.openings.map((opening) => ({ ...opening, to: null, note: null })) };
 }

@@ -1,10 +1,11 @@
+import type { Transaction } from 'sequelize';
 import { inTransaction } from '@/db/client';
+import type { Lot } from '@/db/models';
 import { addBottles, takeBottles, writeMove } from '@/db/queries/lots';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
 import type { LotBody, MoveBottles } from '@/lib/contracts/lots';
-import { REASON_MIN_LETTERS } from '@/lib/core/bottling/verdict';
 import { ConflictError, InvalidError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { notifyChange } from '../changes';
@@ -12,6 +13,7 @@ import { roomFor } from '../places/room';
 import { getLot } from './get';
 import { keptBench } from './kept';
 import { loadBottle, loadLot } from './load';
+import { writtenReason } from './reason';
 import { tooWarm } from './warmth';
 
 /**
@@ -31,10 +33,9 @@ export async function moveBottles(actor: Actor, lotId: string, input: MoveBottle
     if (warm) {
       if (!warm.overridable || input.override_reason === null) throw new ConflictError(`Do not move them there. ${warm.sentence}`);
       authorize(actor, 'lots.override');
-      if ((input.override_reason.match(/\p{L}/gu) ?? []).length < REASON_MIN_LETTERS) throw new InvalidError('The reason says too little.', { override_reason: [`write why, in at least ${REASON_MIN_LETTERS} letters: it stays on the lot`] });
-      await lot.update({ caution: `Moved against a stop: ${warm.sentence} Eye protection and gloves; keep it boxed; open outdoors.`, overrideReason: input.override_reason, overrideBy: actor.personId, overrideAt: now }, { transaction });
+      await cautionMoved(lot, `Moved against a stop: ${warm.sentence} Eye protection and gloves; keep it boxed; open outdoors.`, { overrideReason: writtenReason('override_reason', input.override_reason), overrideBy: actor.personId, overrideAt: now }, transaction);
     }
-    const reason = warm ? input.override_reason : null;
+    const reason = warm && input.override_reason !== null ? input.override_reason.trim() : null;
     if (!(await takeBottles({ lotBottleId: bottle.id, placeId: input.from_place_id }, input.count, transaction))) throw new InvalidError('There are not so many.', { count: ['not so many stand there'] });
     await addBottles({ cellarId: actor.cellarId, lotBottleId: bottle.id, placeId: input.to_place_id }, input.count, transaction);
     await writeMove({ cellarId: actor.cellarId, lotId, lotBottleId: bottle.id, fromPlace: input.from_place_id, toPlace: input.to_place_id, count: input.count, at: now, personId: actor.personId, overrideReason: reason }, transaction);
@@ -42,4 +43,10 @@ export async function moveBottles(actor: Actor, lotId: string, input: MoveBottle
     await notifyChange({ cellar: actor.cellarId, kind: 'lot', batch: null }, transaction);
     return getLot(actor, lotId, clock, transaction);
   });
+}
+
+/** What stood on the lot before stays: neither an earlier caution nor the reason for an earlier stop is written over. The move keeps its own reason. */
+async function cautionMoved(lot: Lot, caution: string, override: Pick<Lot, 'overrideReason' | 'overrideBy' | 'overrideAt'>, transaction: Transaction): Promise<void> {
+  const words = lot.caution === null ? caution : lot.caution.includes(caution) ? lot.caution : `${lot.caution} ${caution}`;
+  await lot.update({ caution: words, ...(lot.overrideReason === null && override) }, { transaction });
 }

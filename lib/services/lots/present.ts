@@ -1,5 +1,5 @@
 import type { LotBottle } from '@/db/models';
-import type { LotRow, MoveRow, OpeningRow, StandRow } from '@/db/queries/lots';
+import type { LiftedRow, LotRow, MoveRow, OpeningRow, StandRow } from '@/db/queries/lots';
 import type { NextTimeRow } from '@/db/queries/musts';
 import type { LotBody, LotSummary } from '@/lib/contracts/lots';
 import { times } from '@/lib/core/units/range';
@@ -40,6 +40,7 @@ export interface LotParts {
   stands: readonly StandRow[];
   openings: readonly OpeningRow[];
   moves: readonly MoveRow[];
+  lifted: readonly LiftedRow[];
   nextTime: readonly NextTimeRow[];
 }
 
@@ -70,7 +71,8 @@ export function presentWhole(row: LotRow, parts: LotParts, now: number): LotBody
       };
     }),
     openings: parts.openings.map((opening) => ({ id: opening.id, at: iso(opening.at), kind: opening.kind, bottle_id: opening.lotBottleId, size_ml: opening.sizeMl, count: opening.count, to: opening.to, note: opening.note, place: opening.place, by: opening.by })),
-    moves: parts.moves.map((move) => ({ at: iso(move.at), from: move.from, to: move.to, size_ml: move.sizeMl, count: move.count, by: move.by })),
+    moves: parts.moves.map((move) => ({ at: iso(move.at), from: move.from, to: move.to, size_ml: move.sizeMl, count: move.count, by: move.by, override_reason: move.overrideReason })),
+    lifted: parts.lifted.map((lift) => ({ caution: lift.caution, reason: lift.reason, by: lift.by, at: iso(lift.at) })),
     bench: bench.shown,
     override: row.overrideReason === null || row.overrideAt === null ? null : { reason: row.overrideReason, by: row.overrideBy, at: iso(row.overrideAt) },
     next_time: parts.nextTime.map(presentNextTime),

@@ -62,7 +62,7 @@ export async function updatePlace(actor: Actor, id: string, input: UpdatePlaceFo
     });
     const before = await placeBody(actor.cellarId, id, transaction);
     if (place.capacity !== null && input.capacity !== undefined && before.bottles > place.capacity) throw new InvalidError('More bottles stand there.', { capacity: [`must be at least ${before.bottles}: so many stand there`] });
-    if (input.temperature_c !== undefined) await refuseTooWarm(place, transaction);
+    if (warmer(place.previous('temperatureC'), place.temperatureC)) await refuseTooWarm(place, transaction);
     await place.save({ transaction });
     await auditBy(actor, 'place.updated', id, { ...input }, transaction);
     await notifyChange({ cellar: actor.cellarId, kind: 'lot', batch: null }, transaction);
@@ -70,13 +70,15 @@ export async function updatePlace(actor: Actor, id: string, input: UpdatePlaceFo
   });
 }
 
+/** Whether a place gets warmer than it was, or warm at all where nobody had said. A place that cools bears what stood there before. */
+const warmer = (before: number | null | undefined, after: number | null): boolean => after !== null && (before === null || before === undefined || after > before);
+
 async function refuseTooWarm(place: Place, transaction: Transaction): Promise<void> {
   const ids = await bottlesAt(place.id, transaction);
   const bottles = ids.length ? await LotBottle.findAll({ where: { id: ids }, transaction }) : [];
   for (const bottle of bottles) {
     const lot = await Lot.findByPk(bottle.lotId, { transaction, rejectOnEmpty: true });
-    // A lot that was put there against a stop has its caution already.
-    const warm = lot.overrideReason === null ? tooWarm(keptBench(lot.bench), bottle, place) : null;
+    const warm = tooWarm(keptBench(lot.bench), bottle, place);
     if (warm) throw new ConflictError(`Move ${lot.name} (${lot.code}) first. ${warm.sentence}`);
   }
 }
