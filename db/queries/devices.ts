@@ -1,5 +1,6 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import { database } from '../client';
+import { OPEN_SIGN_IN } from './sessions';
 
 export interface DeviceRow {
   id: string;
@@ -13,11 +14,11 @@ export interface DeviceRow {
   lastError: string | null;
 }
 
-/** The person's devices that take push messages: those whose sign-in was not ended. */
+/** The person's devices that take push messages: those whose sign-in is still open. */
 export function devicesOf(personId: string): Promise<DeviceRow[]> {
   return database().query(
     `select d.id, d.sign_in_id as "signInId", d.endpoint, d.p256dh, d.auth, d.user_agent as "userAgent", d.created_at as "createdAt", d.last_taken_at as "lastTakenAt", d.last_error as "lastError"
-     from push_subscriptions d join sign_ins s on s.id = d.sign_in_id where d.person_id = $personId and s.ended_at is null order by d.created_at, d.id`,
+     from push_subscriptions d join sign_ins s on s.id = d.sign_in_id where d.person_id = $personId and ${OPEN_SIGN_IN} order by d.created_at, d.id`,
     { bind: { personId }, type: QueryTypes.SELECT },
   );
 }
@@ -56,7 +57,7 @@ export async function noteDevice(id: string, at: Date, error: string | null): Pr
   await database().query(`update push_subscriptions set last_taken_at = case when $error::text is null then $at::timestamptz else last_taken_at end, last_error = $error where id = $id`, { bind: { id, at, error } });
 }
 
-/** Addresses whose sign-in has ended are of no more use. */
+/** Addresses whose sign-in has ended are of no more use: a browser registers anew when somebody signs in. */
 export async function forgetEndedDevices(): Promise<void> {
-  await database().query(`delete from push_subscriptions d using sign_ins s where s.id = d.sign_in_id and s.ended_at is not null`);
+  await database().query(`delete from push_subscriptions d using sign_ins s where s.id = d.sign_in_id and not (${OPEN_SIGN_IN})`);
 }

@@ -2,6 +2,7 @@ import { QueryTypes, type Transaction } from 'sequelize';
 import type { RuleSetting } from '../../lib/core/alerts/rules';
 import type { Escalation, MeansName, MessageChoice, QuietHours } from '../../lib/core/alerts/telling';
 import { database } from '../client';
+import { OPEN_SIGN_IN } from './sessions';
 
 export interface Hearer {
   personId: string;
@@ -15,7 +16,7 @@ export function hearersOf(cellarId: string, transaction: Transaction): Promise<H
   return database().query<Hearer>(
     `select m.person_id as "personId",
        coalesce((select json_agg(json_build_object('rule', c.rule, 'means', c.means, 'wanted', c.wanted)) from message_choices c where c.cellar_id = m.cellar_id and c.person_id = m.person_id), '[]') as choices,
-       exists (select 1 from push_subscriptions d join sign_ins s on s.id = d.sign_in_id where d.person_id = m.person_id and s.ended_at is null) as "hasDevice"
+       exists (select 1 from push_subscriptions d join sign_ins s on s.id = d.sign_in_id where d.person_id = m.person_id and ${OPEN_SIGN_IN}) as "hasDevice"
      from memberships m where m.cellar_id = $cellarId and m.role in ('keeper', 'brewer', 'hand') order by m.created_at, m.person_id`,
     { bind: { cellarId }, type: QueryTypes.SELECT, transaction },
   );

@@ -9,11 +9,14 @@ export interface SessionRow {
   role: Role | null;
 }
 
+/** Whether the sign-in `s` still opens anything: not ended, not run out, and used lately. */
+export const OPEN_SIGN_IN = 's.ended_at is null and s.expires_at > now() and s.last_seen_at > now() - make_interval(secs => s.idle_s)';
+
 const OPEN: Prepared = {
   name: 'open-session',
   text: `select s.person_id as "personId", extract(epoch from now() - s.last_seen_at)::float8 as "seenS", m.cellar_id as "cellarId", m.role
      from sign_ins s left join memberships m on m.person_id = s.person_id
-     where s.id = $1 and s.ended_at is null and s.expires_at > now() and s.last_seen_at > now() - make_interval(secs => s.idle_s)
+     where s.id = $1 and ${OPEN_SIGN_IN}
      order by m.created_at, m.cellar_id`,
 };
 

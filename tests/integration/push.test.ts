@@ -4,7 +4,7 @@ import { join } from 'node:path';
 import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
 import webpush from 'web-push';
 import { OutboxMail, SignIn } from '@/db/models';
-import { devicesOf } from '@/db/queries/devices';
+import { devicesOf, forgetEndedDevices } from '@/db/queries/devices';
 import { forgetEnv } from '@/lib/config/env';
 import { createDevice as deviceForm } from '@/lib/contracts/messages';
 import { ForbiddenError, InvalidError, NotFoundError } from '@/lib/errors';
@@ -127,6 +127,21 @@ describe('push messages', () => {
     await tell(['stall']);
     expect(service.taken).toEqual([]);
     expect(await pushed()).toEqual([]);
+  });
+
+  it.each([
+    ['has run out', { expiresAt: new Date(Date.now() - 1_000) }],
+    ['was not used for too long', { lastSeenAt: new Date(Date.now() - 5 * 3_600_000), idleS: 4 * 3_600 }],
+  ])('end where it %s: the screen may be somebody else’s', async (_, over) => {
+    const by = await SignIn.create({ personId: una().personId, expiresAt: new Date('2030-01-01'), ...over });
+    await register(service.browser(), by);
+    await tell(['stall']);
+    expect(service.taken).toEqual([]);
+    expect(await pushed()).toEqual([]);
+    expect(await devicesOf(una().personId)).toEqual([]);
+    await forgetEndedDevices();
+    const [left] = await db.sequelize.query('select 1 from push_subscriptions');
+    expect(left).toEqual([]);
   });
 
   it('go no more to a device whose browser somebody else has signed in on', async () => {
