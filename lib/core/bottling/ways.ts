@@ -17,10 +17,14 @@ const lowestRating = (request: BenchRequest, filled: readonly { key: string }[])
   return ratings.length > pressures.length || pressures.length === 0 ? 'never' : ratedBar(Math.min(...pressures));
 };
 
-/** A request is a way out when nothing is wrong with it. */
+/** Nothing is wrong but, at most, that nobody has read the maker's figure: the bench goes on asking for it. */
+const onlyUnconfirmed = (tried: Worked): boolean => tried.problems.every((p) => p.kind === 'rating_not_confirmed');
+
+/** A request is a way out when nothing is wrong with it, the figure to be confirmed aside. */
 function offer(kind: WayOut['kind'], title: string, sentence: string, request: BenchRequest, use: boolean, tried: Worked = work(request)): WayOut[] {
-  if (tried.problems.length > 0) return [];
-  return [{ kind, title, sentence, worstBar: tried.worstBar, rated: lowestRating(request, tried.picture.bottles), request: use ? request : null }];
+  if (!onlyUnconfirmed(tried)) return [];
+  const confirm = tried.problems.length > 0 ? ' Confirm the maker’s figure first.' : '';
+  return [{ kind, title, sentence: `${sentence}${confirm}`, worstBar: tried.worstBar, rated: lowestRating(request, tried.picture.bottles), request: use ? request : null }];
 }
 
 /** The safe choices for a stopped request, those that need nothing but a change on the bench first. */
@@ -38,25 +42,35 @@ export function waysOut(request: BenchRequest, stopped: Worked): WayOut[] {
 
 const still = (request: BenchRequest): BenchRequest => ({ ...request, priming: { way: 'none' } });
 
-function lessSugar(request: BenchRequest): WayOut[] {
+interface Less {
+  kind: 'less_sugar' | 'fewer_drops';
+  title: string;
+  sentence: string;
+  request: BenchRequest;
+}
+
+/** The same with less sugar, and less again: by a tenth of a volume, or a drop in each bottle. Under 1.2 volumes nobody tastes it. */
+function* withLess(request: BenchRequest): Generator<Less> {
   const { priming } = request;
   if (priming.way === 'weighed') {
-    // Down by a tenth of a volume until nothing is wrong; under 1.2 volumes nobody tastes it.
+    const sentence = `Less sparkle than the ${priming.wantedVolumes.toFixed(1)} asked.`;
     for (let wanted = roundDown(priming.wantedVolumes - 0.1, 0.1); wanted >= 1.2; wanted = roundTo(wanted - 0.1, 0.1)) {
-      const less: BenchRequest = { ...request, priming: { ...priming, wantedVolumes: wanted } };
-      const tried = work(less);
-      if (tried.problems.length === 0) return offer('less_sugar', `Prime to ${wanted.toFixed(1)} volumes`, `Less sparkle than the ${priming.wantedVolumes.toFixed(1)} asked.`, less, true, tried);
+      yield { kind: 'less_sugar', title: `Prime to ${wanted.toFixed(1)} volumes`, sentence, request: { ...request, priming: { ...priming, wantedVolumes: wanted } } };
     }
-    return [];
   }
   if (priming.way === 'drops') {
     const most = Math.max(0, ...Object.values(priming.drops));
     for (let fewer = 1; fewer < most; fewer += 1) {
       const drops = Object.fromEntries(Object.entries(priming.drops).map(([key, n]) => [key, Math.max(0, n - fewer)]));
-      const less: BenchRequest = { ...request, priming: { ...priming, drops } };
-      const tried = work(less);
-      if (tried.problems.length === 0) return offer('fewer_drops', 'Fewer drops', `${fewer} less in each bottle.`, less, true, tried);
+      yield { kind: 'fewer_drops', title: 'Fewer drops', sentence: `${fewer} less in each bottle.`, request: { ...request, priming: { ...priming, drops } } };
     }
+  }
+}
+
+function lessSugar(request: BenchRequest): WayOut[] {
+  for (const less of withLess(request)) {
+    const tried = work(less.request);
+    if (onlyUnconfirmed(tried)) return offer(less.kind, less.title, less.sentence, less.request, true, tried);
   }
   return [];
 }
@@ -110,16 +124,26 @@ function wait(request: BenchRequest): WayOut[] {
   if (done.gravity === null || !done.remaining) return [];
   const remaining = done.remaining.value.hi;
   if (done.verdict === 'done' && remaining <= READING_DOUBT_POINTS) return [];
-  const allowed = allowedPoints(request);
-  if (allowed < READING_DOUBT_POINTS) return [];
-  const points = Math.min(allowed, remaining);
+  const asked = bearable(request);
+  if (!asked) return [];
+  const points = Math.min(asked.allowed, remaining);
   const target = roundDown(done.gravity - (remaining - points) / 1000, 0.001);
-  const then: BenchRequest = { ...request, done: finished(done, exactly(points), done.stabilised) };
+  const then: BenchRequest = { ...asked.request, done: finished(done, exactly(points), done.stabilised) };
   const [title, sentence] =
     target < done.gravity - 5e-4
       ? [`Let it fall to ${target.toFixed(3)} first`, 'Rouse the yeast, keep it warm, and wait for two equal readings there.']
       : ['Wait for equal readings', `${done.changesIt} Then judge again.`];
-  return offer('wait', title, sentence, then, false);
+  return offer('wait', title, `${sentence}${asked.but}`, then, false);
+}
+
+/** What of the request bears at least the doubt of a reading once it has finished: all of it, or with less sugar, or still. */
+function bearable(request: BenchRequest): { request: BenchRequest; allowed: number; but: string } | null {
+  const asked = [{ request, but: '' }, ...[...withLess(request)].map((less) => ({ request: less.request, but: ` Then with less sugar: ${less.title.toLowerCase()}.` })), { request: still(request), but: ' Then still, without sugar.' }];
+  for (const { request: one, but } of asked) {
+    const allowed = allowedPoints(one);
+    if (allowed >= READING_DOUBT_POINTS) return { request: one, allowed, but };
+  }
+  return null;
 }
 
 /** Points that every bottle asked for could bear on top of what is asked. */

@@ -176,6 +176,20 @@ describe('ways out', () => {
     expect(judgeBench(then).verdict).toBe('safe');
   });
 
+  test('where the bottles bear no point on top of what is asked, waiting comes with less sugar then, or none', () => {
+    const working = { hydrometer: [{ at: NOW - 6 * DAY, gravity: 1.009 }, { at: NOW - DAY, gravity: 1.005 }] };
+    const beer = (wanted: number, rating: number) => stopped(benchRequest({ bottles: [bottle('beer', 'crown_26', 500, rating)], priming: { way: 'weighed', sugar: primingSugar('sucrose'), wantedVolumes: wanted } }, working));
+    expect(beer(2.4, 3).ways.find((w) => w.kind === 'wait')?.sentence).toMatch(/Then with less sugar: prime to [12]\.\d volumes/);
+    expect(beer(2.4, 1.2).ways.find((w) => w.kind === 'wait')?.sentence).toMatch(/Then still/);
+  });
+
+  test('a figure nobody has confirmed hides no way out; it says that the figure is still to be confirmed, and the bench goes on asking', () => {
+    const stop = stopped(benchRequest({ bottles: [bottle('beer', 'crown_26', 500, null)], priming: { way: 'weighed', sugar: primingSugar('sucrose'), wantedVolumes: 3.5 } }));
+    const less = stop.ways.find((w) => w.kind === 'less_sugar');
+    expect(less?.sentence).toContain('Confirm the maker’s figure first');
+    expect(kinds(stopped(less!.request!))).toEqual(['rating_not_confirmed']);
+  });
+
   test('less sugar is found where it is enough', () => {
     const sparkling = benchRequest({ priming: { way: 'weighed', sugar: primingSugar('sucrose'), wantedVolumes: 3.5 } });
     const less = stopped(sparkling).ways.find((w) => w.kind === 'less_sugar');
