@@ -69,6 +69,7 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
   const [later, setLater] = useState(false);
   const [busy, setBusy] = useState(false);
   const done = ticks.ticked.has(job.id);
+  const saved = ticks.saved.has(job.id);
   const mine = job.taken_by?.id === me;
 
   async function send(act: () => Promise<unknown>) {
@@ -113,8 +114,8 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
       </div>
       {done ? (
         <div className="not-printed flex shrink-0 items-center justify-end gap-3">
-          <span role="status" className="type-label text-ink2">Done and logged.</span>
-          <Button onClick={() => ticks.untick(job)}>Take it back</Button>
+          <span role="status" className="type-label text-ink2">{saved ? 'Done and logged.' : 'Saving'}</span>
+          <Button disabled={!saved} onClick={() => ticks.untick(job)}>Take it back</Button>
         </div>
       ) : (
         mayDo && (

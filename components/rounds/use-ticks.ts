@@ -8,6 +8,8 @@ import { UNDO_S, type JobBody } from '@/lib/contracts/jobs';
 export interface Ticks {
   /** Ticked here; each stays in its place for ten seconds, so that it can be taken back there. */
   ticked: ReadonlyMap<string, JobBody>;
+  /** Those of them that the server has kept. Until then nothing is said to be done. */
+  saved: ReadonlySet<string>;
   failed: string | null;
   tick: (job: JobBody) => void;
   untick: (job: JobBody) => void;
@@ -18,6 +20,7 @@ const said = (error: unknown, title: string) => `${title}: ${error instanceof Cl
 
 export function useTicks(): Ticks {
   const [ticked, setTicked] = useState<ReadonlyMap<string, JobBody>>(new Map());
+  const [saved, setSaved] = useState<ReadonlySet<string>>(new Set());
   const [failed, setFailed] = useState<string | null>(null);
   const timers = useRef(new Map<string, ReturnType<typeof setTimeout>>());
 
@@ -30,22 +33,30 @@ export function useTicks(): Ticks {
     clearTimeout(timers.current.get(id));
     timers.current.delete(id);
     setTicked((before) => new Map([...before].filter(([key]) => key !== id)));
+    setSaved((before) => new Set([...before].filter((key) => key !== id)));
   };
 
   return {
     ticked,
+    saved,
     failed,
     fail: setFailed,
     tick: (job) => {
       setFailed(null);
       setTicked((before) => new Map(before).set(job.id, job));
-      timers.current.set(job.id, setTimeout(() => drop(job.id), UNDO_S * 1000));
-      doJob(job.id).catch((error: unknown) => {
-        drop(job.id);
-        setFailed(said(error, job.title));
-      });
+      doJob(job.id)
+        .then(() => {
+          setSaved((before) => new Set(before).add(job.id));
+          timers.current.set(job.id, setTimeout(() => drop(job.id), UNDO_S * 1000));
+        })
+        .catch((error: unknown) => {
+          drop(job.id);
+          setFailed(said(error, job.title));
+        });
     },
     untick: (job) => {
+      // What is still on its way cannot be taken back yet.
+      if (!saved.has(job.id)) return;
       undoJob(job.id)
         .then(() => drop(job.id))
         .catch((error: unknown) => setFailed(said(error, job.title)));

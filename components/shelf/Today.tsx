@@ -73,10 +73,16 @@ function JobWho({ row, ticks, mayDo }: { row: TodayJob; ticks: Ticks; mayDo: boo
   if (ticks.ticked.has(job.id)) {
     return (
       <p role="status" className="type-label text-ink2">
-        done.{' '}
-        <button type="button" className="underline underline-offset-2" onClick={() => ticks.untick(job)}>
-          take it back
-        </button>
+        {ticks.saved.has(job.id) ? (
+          <>
+            done.{' '}
+            <button type="button" className="underline underline-offset-2" onClick={() => ticks.untick(job)}>
+              take it back
+            </button>
+          </>
+        ) : (
+          'saving'
+        )}
       </p>
     );
   }
@@ -173,7 +179,9 @@ export function PhoneToday({ jobs, ticks, nothing, mayDo, loading }: TodayProps)
               </div>
             </div>
             {done ? (
-              <Button onClick={() => ticks.untick(job)}>Take it back</Button>
+              <Button disabled={!ticks.saved.has(job.id)} onClick={() => ticks.untick(job)}>
+                {ticks.saved.has(job.id) ? 'Take it back' : 'Saving'}
+              </Button>
             ) : job.taken_by ? (
               <span className="type-label text-ink2">{firstName(job.taken_by.name)} has it</span>
             ) : (

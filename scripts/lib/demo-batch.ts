@@ -5,6 +5,7 @@ import type { SimulatedBatch, SimulatedEvent } from '@/devices/simulator/generat
 import { catalogued } from '@/lib/core/must/catalogue';
 import { finingIn } from '@/lib/services/finings/start';
 import { readAt, type Household } from './demo-past';
+import { writeWater } from './demo-rounds';
 import { writeSheet } from './demo-sheets';
 
 const HOUR = 3_600_000;
@@ -69,7 +70,11 @@ function entryOf(event: SimulatedEvent, { scenario, setup }: SimulatedBatch): Pa
 }
 
 /** What is under way when the demo opens. */
-export async function writeToday({ cellarId, brewer, hand }: Household, demo: DemoBatch, batchId: string, simulated: SimulatedBatch, now: number, transaction: Transaction): Promise<void> {
+export async function writeToday(house: Household, demo: DemoBatch, batchId: string, simulated: SimulatedBatch, now: number, transaction: Transaction): Promise<void> {
+  const { cellarId, brewer, hand } = house;
+  const batch = await Batch.findByPk(batchId, { transaction, rejectOnEmpty: true });
+  const airlockSince = simulated.events.findLast((event) => event.kind === 'neck' && event.neck === 'airlock')?.at ?? simulated.setup.pitchedAt!;
+  await writeWater(house, demo, batch, airlockSince, now, transaction);
   for (const atH of demo.readAtH ?? []) {
     const at = simulated.setup.pitchedAt! + atH * HOUR;
     const gravity = readAt(simulated, at);

@@ -13,6 +13,7 @@ import { hashSensorSecret, makeSensorIdentifier, makeSensorSecret } from '@/lib/
 import type { Role } from '@/lib/core/roles';
 import { writeBatch, writeToday } from './demo-batch';
 import { finishPast, writePlaces, type Household } from './demo-past';
+import { writeOwnJobs } from './demo-rounds';
 
 const HOUR = 3_600_000;
 const INTERVAL_S = 900;
@@ -43,6 +44,7 @@ export async function seedDemo(sequelize: Sequelize, now: number): Promise<Seede
   await sequelize.transaction(async (transaction) => {
     const house = await writeHousehold(timeZone, passwordHash, new Date(now - (oldest + 24) * HOUR), transaction);
     await writePasts(sequelize, house, now, transaction);
+    await writeOwnJobs(house, now, transaction);
     const backfill: ReadingRow[] = [];
     for (const demo of DEMO_BATCHES) {
       const scenario = scenarioNamed(demo.scenario);

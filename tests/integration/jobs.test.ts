@@ -56,6 +56,16 @@ describe('the program’s jobs', () => {
     expect(await titles(hand)).toEqual([]);
   });
 
+  it('leave rack and bottle aside until a fining has settled', async () => {
+    const brewer = await buildMember('brewer');
+    const batch = await ciderAt(brewer, { batch: { neck: 'blow_off' } });
+    await startFining(brewer, batch.id, finingForm.parse({ at: isoAt(NOON - HOUR), fining: 'bentonite', settle_days: 5 }), clockAt(NOON));
+    await sync(batch, judged({ ...RACK, bottle: { verdict: 'yes', since: NOON } }));
+    expect(await titles(brewer)).toEqual([`See whether ${batch.name} is bright`]);
+    await sync(batch, judged(RACK), NOON + 5 * DAY);
+    expect(await titles(brewer, NOON + 5 * DAY)).toContain(`Rack ${batch.name}`);
+  });
+
   it('are not asked again once they were ticked, until their reason was gone', async () => {
     const hand = await buildMember('hand');
     const batch = await buildBatch({ cellarId: hand.cellarId, name: 'Perry', pitchedAt: new Date(NOON - 5 * DAY), neck: 'blow_off' });

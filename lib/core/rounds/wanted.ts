@@ -43,6 +43,8 @@ export interface RoundsInput {
   airlockAt: Instant | null;
   /** What is to be fed now. */
   feed: Feed | null;
+  /** A fining waits for its second dose, or has not settled yet. */
+  clearing: boolean;
   at: Instant;
 }
 
@@ -64,10 +66,11 @@ const JOB_OF_CALL: Record<CallName, (call: Sketch, input: RoundsInput) => Pick<W
     if (call.verdict !== 'yes' && call.verdict !== 'hold') return null;
     return { kind: 'sensor', title: call.kind === 'silent' ? `See to the sensor in ${name}` : `Check the sensor in ${name} against a hydrometer`, exact: false };
   },
-  rack: (call, { name }) => (call.verdict === 'yes' ? { kind: 'rack', title: `Rack ${name}`, exact: false } : null),
-  bottle: (call, { name }) => {
+  // What may be bottled is not racked once more first, and finings are left to fall before either.
+  rack: (call, { name, calls, clearing }) => (call.verdict === 'yes' && calls.bottle.verdict !== 'yes' && !clearing ? { kind: 'rack', title: `Rack ${name}`, exact: false } : null),
+  bottle: (call, { name, clearing }) => {
     if (call.kind === 'refermentation') return { kind: 'bottle', title: `${name} works again: keep it under an airlock`, exact: true };
-    return call.verdict === 'yes' ? { kind: 'bottle', title: `Bottle ${name}`, exact: false } : null;
+    return call.verdict === 'yes' && !clearing ? { kind: 'bottle', title: `Bottle ${name}`, exact: false } : null;
   },
 };
 

@@ -1,5 +1,6 @@
 import { Op, type Transaction } from 'sequelize';
-import { Alert, Job, type Batch, type Entry } from '@/db/models';
+import { Alert, FiningRun, Job, type Batch, type Entry } from '@/db/models';
+import { finingState } from '@/lib/core/additions/fining';
 import { wantedJobs, type Wanted } from '@/lib/core/rounds/wanted';
 import type { Assessment, Instant } from '@/lib/core/types';
 import { notifyChange } from '../changes';
@@ -40,6 +41,7 @@ export async function jobsFromCalls(batch: Batch, assessment: Assessment | null,
           readAt: lastAt([...entries.filter((entry) => entry.kind === 'reading').map((entry) => entry.at), await ticked('reading')]),
           airlockAt: lastAt([...entries.filter((entry) => entry.neck === 'airlock').map((entry) => entry.at), await ticked('airlock')]),
           feed: await feedOf(batch, assessment, at, transaction),
+          clearing: await isClearing(batch.id, at, transaction),
           at,
         });
   const now = new Date(at);
@@ -54,6 +56,11 @@ export async function jobsFromCalls(batch: Batch, assessment: Assessment | null,
     await row.update({ overAt: now, droppedAt: row.droppedAt ?? (row.doneAt === null ? now : null) }, { transaction });
   }
   if (changed) await notifyChange({ cellar: batch.cellarId, kind: 'job', batch: batch.id }, transaction);
+}
+
+async function isClearing(batchId: string, at: Instant, transaction: Transaction): Promise<boolean> {
+  const runs = await FiningRun.findAll({ where: { batchId }, transaction });
+  return runs.some(({ intervalMin, settleDays, firstAt, secondAt }) => firstAt.getTime() <= at && finingState({ intervalMin, settleDays, firstAt: firstAt.getTime(), secondAt: secondAt?.getTime() ?? null }, at).state !== 'settled');
 }
 
 /** @returns whether a person sees a difference. */

@@ -8,7 +8,7 @@ const AT = Date.UTC(2026, 2, 4, 12);
 const quiet: Call = { verdict: 'no', kind: null, since: null, expectedAt: null, headline: '', reason: '', act: null, changesIt: null, evidence: [] };
 
 const input = (calls: Partial<Record<CallName, Partial<Call>>> = {}, over: Partial<RoundsInput> = {}): RoundsInput => ({
-  name: 'Perry', neck: 'blow_off', stage: 'slowing', pitchedAt: AT - 5 * DAY, floatAt: AT, readAt: null, airlockAt: null, feed: null, at: AT,
+  name: 'Perry', neck: 'blow_off', stage: 'slowing', pitchedAt: AT - 5 * DAY, floatAt: AT, readAt: null, airlockAt: null, feed: null, clearing: false, at: AT,
   calls: Object.fromEntries(CALL_NAMES.map((name) => [name, { ...quiet, ...calls[name] }])) as Record<CallName, Call>,
   ...over,
 });
@@ -37,6 +37,15 @@ describe('the jobs a batch wants', () => {
     expect(titles({ bottle: { verdict: 'hold', kind: 'refermentation' } })).toEqual(['Perry works again: keep it under an airlock']);
     expect(titles({ bottle: { verdict: 'yes' } })).toEqual(['Bottle Perry']);
     expect(titles({ bottle: { verdict: 'soon', expectedAt: AT } })).toEqual([]);
+  });
+
+  it('say bottle or rack, not both, and neither while a fining falls', () => {
+    expect(titles({ rack: { verdict: 'yes' } })).toEqual(['Rack Perry']);
+    expect(titles({ rack: { verdict: 'yes' }, bottle: { verdict: 'yes' } })).toEqual(['Bottle Perry']);
+    expect(titles({ rack: { verdict: 'yes' }, bottle: { verdict: 'yes' } }, { clearing: true })).toEqual([]);
+    expect(titles({ rack: { verdict: 'yes' } }, { clearing: true })).toEqual([]);
+    // That it works again is told at any time.
+    expect(titles({ bottle: { verdict: 'hold', kind: 'refermentation' } }, { clearing: true })).toHaveLength(1);
   });
 
   it('ask for a reading by hand only where no sensor was heard for a day, and a day before it is due', () => {
