@@ -48,6 +48,11 @@ export async function tryWasRight(account: string, address: string): Promise<voi
   );
 }
 
+/** The try was no guess: as if it had not been made. */
+export async function takeTryBack(keys: readonly string[]): Promise<void> {
+  await database().query(`update sign_in_tries set tries = greatest(tries - 1, 0), locked_until = now() where key = any($keys::text[])`, { bind: { keys } });
+}
+
 /** Drops what no longer counts. */
 export async function forgetOldTries(): Promise<void> {
   await database().query(`delete from sign_in_tries where last_at < now() - interval '${FORGET}'`);

@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto';
-import { countTry, forgetOldTries, tryWasRight, type TryRule } from '@/db/queries/sign-in-tries';
+import { countTry, forgetOldTries, takeTryBack, tryWasRight, type TryRule } from '@/db/queries/sign-in-tries';
 import { ThrottledError } from '../errors';
 
 /** One account: five guesses, then 30 s, 1 min, 2 min, … up to a quarter of an hour. */
@@ -14,6 +14,8 @@ export interface Tries {
   /** @throws ThrottledError while the account or the address has to wait. */
   begin(): Promise<void>;
   right(): Promise<void>;
+  /** It guessed at nothing, and opened nothing either: it does not count. */
+  noGuess(): Promise<void>;
 }
 
 /** Known and unknown accounts are counted alike, so that a lock tells nothing. */
@@ -48,5 +50,6 @@ function tries(account: string | null, accountRule: TryRule | null, from: string
       await tryWasRight(account ?? '', from ?? '');
       await forgetOldTries();
     },
+    noGuess: () => takeTryBack([account, from].filter((item) => item !== null)),
   };
 }

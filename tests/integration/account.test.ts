@@ -245,6 +245,30 @@ describe('the second factor', () => {
     await expect(signIn(form, false, from(), clock.now())).rejects.toThrow(ThrottledError);
   });
 
+  it('costs nobody a try to be asked for it: the right passphrase was no guess', async () => {
+    const { person } = await member('brewer');
+    const code = await authenticator(person.id);
+    await confirmSecondFactor(person.id, code(), clock);
+    clock.advance(MINUTE);
+    const form = { email: person.email, password: PASS };
+    for (let index = 0; index < 8; index += 1) expect(await signIn(form, false, from(), clock.now())).toBe('code-needed');
+    opened(await signIn({ ...form, code: code() }, false, from(), clock.now()));
+    const [left] = await db.sequelize.query('select 1 from sign_in_tries where tries > 0');
+    expect(left).toEqual([]);
+  });
+
+  it('forgives no wrong code for a right passphrase in between', async () => {
+    const { person } = await member('brewer');
+    const code = await authenticator(person.id);
+    await confirmSecondFactor(person.id, code(), clock);
+    const form = { email: person.email, password: PASS };
+    for (let index = 0; index < 6; index += 1) {
+      expect(await signIn(form, false, from(), clock.now())).toBe('code-needed');
+      expect(await signIn({ ...form, code: 'aaaaaaaaaa' }, false, from(), clock.now())).toBe('code-wrong');
+    }
+    await expect(signIn(form, false, from(), clock.now())).rejects.toThrow(ThrottledError);
+  });
+
   it('is taken off with passphrase and code, and not with one of them', async () => {
     const { person } = await member('brewer');
     const code = await authenticator(person.id);

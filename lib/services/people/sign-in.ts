@@ -51,6 +51,8 @@ export async function signIn(form: SignInForm, stay: boolean, from: SignInFrom, 
   const shown = await secondFactorOf(person.id, form.code, now);
   if (shown !== 'right') {
     if (shown === 'wrong') await audit({ action: 'sign-in.refused', subject: 'code', personId: person.id, cellarId: null });
+    // The code comes with a second try: a household of careful people must not lock itself out.
+    else await tries.noGuess();
     return shown === 'needed' ? 'code-needed' : 'code-wrong';
   }
   await tries.right();
