@@ -5,7 +5,7 @@ import { FallChart } from '@/components/charts/FallChart';
 import { TwinTable } from '@/components/charts/TextTwin';
 import type { Picture, Span } from '@/components/charts/picture';
 import { twinOf } from '@/components/charts/twin';
-import { isWhole, zoomed } from '@/components/charts/zoom';
+import { ZoomTools } from '@/components/charts/ZoomTools';
 import { Button } from '@/components/ui/Button';
 import { Haze } from '@/components/ui/Haze';
 import { ChartKey } from './ChartKey';
@@ -32,7 +32,6 @@ interface EvidenceProps {
 }
 
 const LINK = 'type-label min-h-11 text-ink underline decoration-rule2 underline-offset-4 aria-expanded:font-bold strip:min-h-6';
-const TOOL = 'type-label inline-flex h-11 min-w-11 items-center justify-center rounded border border-ink3 px-2 text-ink hover:bg-desk disabled:border-dashed disabled:text-ink3 strip:h-6 strip:min-w-6';
 
 /** The chart with its key, the line of figures under the cursor, zoom by buttons, and the same numbers as a table. */
 export function Evidence({ name, picture, span, whole, onSpan, timeZone, phone, arriving, trouble, onRetry, plays, children }: EvidenceProps) {
@@ -40,8 +39,6 @@ export function Evidence({ name, picture, span, whole, onSpan, timeZone, phone, 
   const [table, setTable] = useState(false);
   const twin = useMemo(() => twinOf(picture, name, timeZone, 60), [picture, name, timeZone]);
   const line = cursorLine(picture, cursor, timeZone);
-  const all = isWhole(span, whole);
-  const middle = (span.from + span.to) / 2;
   return (
     <section aria-label="Evidence">
       <div className="flex flex-wrap items-center gap-x-5 gap-y-1 px-(--margin) py-2 wide:pr-[14px]">
@@ -52,7 +49,7 @@ export function Evidence({ name, picture, span, whole, onSpan, timeZone, phone, 
           <span className="font-bold text-ink">{line.time}</span> {line.figures}
         </p>
         <div className="flex gap-1 max-strip:hidden">
-          <Tools all={all} onIn={() => onSpan(zoomed(span, whole, 2, middle))} onOut={() => onSpan(zoomed(span, whole, 0.5, middle))} onAll={() => onSpan(whole)} />
+          <ZoomTools span={span} whole={whole} onSpan={onSpan} />
         </div>
       </div>
       {trouble && (
@@ -82,7 +79,7 @@ export function Evidence({ name, picture, span, whole, onSpan, timeZone, phone, 
           {table ? 'Put the table away' : phone ? 'As a table' : 'The same numbers as a table'}
         </button>
         <div className="ml-auto flex gap-1 strip:hidden">
-          <Tools all={all} onIn={() => onSpan(zoomed(span, whole, 2, middle))} onOut={() => onSpan(zoomed(span, whole, 0.5, middle))} onAll={() => onSpan(whole)} />
+          <ZoomTools span={span} whole={whole} onSpan={onSpan} />
         </div>
       </div>
       {children}
@@ -92,21 +89,5 @@ export function Evidence({ name, picture, span, whole, onSpan, timeZone, phone, 
         </div>
       )}
     </section>
-  );
-}
-
-function Tools({ all, onIn, onOut, onAll }: { all: boolean; onIn: () => void; onOut: () => void; onAll: () => void }) {
-  return (
-    <>
-      <button type="button" className={TOOL} aria-label="Zoom in" onClick={onIn}>
-        +
-      </button>
-      <button type="button" className={TOOL} aria-label="Zoom out" onClick={onOut} disabled={all}>
-        −
-      </button>
-      <button type="button" className={TOOL} aria-label="Show all of it" onClick={onAll} disabled={all}>
-        all
-      </button>
-    </>
   );
 }

@@ -4,6 +4,7 @@ import Link from 'next/link';
 import { useRouter, useSearchParams } from 'next/navigation';
 import { useMemo, useState } from 'react';
 import { drinkHex } from '@/components/charts/palette';
+import type { Span } from '@/components/charts/picture';
 import { dayName } from '@/components/charts/zone';
 import { Box } from '@/components/ui/Box';
 import { Choice } from '@/components/ui/Choice';
@@ -20,6 +21,8 @@ import { curveOf, tableDays, valueAt, written, type Curve, type Measure } from '
 import { Results } from './Results';
 
 const MOST = 8;
+/** Enough of a curve to look at it closely. */
+const POINTS = 800;
 const MEASURES: readonly { value: Measure; name: string }[] = [
   { value: 'gravity', name: 'gravity' },
   { value: 'share', name: 'share of the fall' },
@@ -86,7 +89,8 @@ function Picker({ batches, chosen, timeZone, onChoose }: { batches: readonly Bat
 }
 
 function Over({ ids }: { ids: readonly string[] }) {
-  const { compared, error, retry } = useCompare(ids, 400);
+  const { compared, error, retry } = useCompare(ids, POINTS);
+  const [span, setSpan] = useState<Span | null>(null);
   const [measure, setMeasure] = useState<Measure>('gravity');
   const curves = useMemo(() => (compared ?? []).map((item) => curveOf(item, measure, drinkHex(item.batch.drink_colour))), [compared, measure]);
   if (error && !compared) {
@@ -103,7 +107,7 @@ function Over({ ids }: { ids: readonly string[] }) {
       <div className="px-(--margin) py-3">
         <Choice label="Drawn" bare value={measure} onChoose={setMeasure} options={MEASURES} className="max-w-[520px]" />
       </div>
-      <CompareChart curves={curves} measure={measure} />
+      <CompareChart curves={curves} measure={measure} span={span} onSpan={setSpan} />
       {unpitched.map((item) => (
         <p key={item.batch.id} className="type-reason px-(--margin) pb-2 text-ink2">
           <Link href={`/batches/${item.batch.id}`}>{item.batch.name}</Link> has not been pitched: there is nothing to align.
