@@ -1,5 +1,5 @@
 /** The import directions of DEVELOPERS.md, as rules. Each name says what is forbidden. */
-const LEAVES = '^lib/(errors|log|clock|origin)\\.ts$|^lib/config/';
+const LEAVES = '^lib/(errors|log|clock|origin|turns)\\.ts$|^lib/config/';
 
 /** `folder` may import itself, packages, and what `allowed` names. */
 const only = (name, folder, allowed, comment) => ({
@@ -16,7 +16,7 @@ module.exports = {
     only('core-is-alone', '^lib/core/', [], 'lib/core imports nothing of the project but itself.'),
     { name: 'core-has-no-io', severity: 'error', comment: 'lib/core is pure: no Node modules.', from: { path: '^lib/core/' }, to: { dependencyTypes: ['core'] } },
     only('contracts', '^lib/contracts/', ['^lib/core/']),
-    only('leaves', '^lib/(errors|log|clock|origin)\\.ts$|^lib/config/', [LEAVES]),
+    only('leaves', '^lib/(errors|log|clock|origin|turns)\\.ts$|^lib/config/', [LEAVES]),
     only('policies', '^lib/auth/policies\\.ts$', ['^lib/core/']),
     only('db', '^db/(?!seed/)', ['^lib/core/', LEAVES]),
     only('seed', '^db/seed/', ['^lib/(core|contracts)/', LEAVES], 'What the demo says is written in the words of the requests that bring it in.'),

@@ -1,4 +1,4 @@
-import { describe, expect, it } from 'vitest';
+import { describe, expect, it, vi } from 'vitest';
 import { hashPassword, passwordFits } from '@/lib/auth/passwords';
 import { UnavailableError } from '@/lib/errors';
 
@@ -30,5 +30,16 @@ describe('passwords', () => {
     for (const answer of refused) expect(answer.reason).toBeInstanceOf(UnavailableError);
     expect(answers.filter((answer) => answer.status === 'fulfilled' && answer.value).length).toBe(42);
     expect(await passwordFits(hash, 'bung')).toBe(true);
+  });
+
+  it('says no again where there is no hash, once a crowd that left no room for it has gone', async () => {
+    vi.resetModules();
+    const fresh = await import('@/lib/auth/passwords');
+    const hash = await fresh.hashPassword('bung');
+    const crowd = Array.from({ length: 42 }, () => fresh.hashPassword('bung'));
+    await expect(fresh.passwordFits(hash, 'bung')).rejects.toThrow('Too many people');
+    await Promise.all(crowd);
+    expect(await fresh.passwordFits(null, 'anything')).toBe(false);
+    expect(await fresh.passwordFits(hash, 'bung')).toBe(true);
   });
 });
