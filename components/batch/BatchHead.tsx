@@ -21,12 +21,12 @@ const compareHref = (batchId: string): string => `/compare?batches=${batchId}`;
 function Facts({ facts, phone }: { facts: readonly Fact[]; phone: boolean }) {
   const shown = phone ? facts.filter((fact) => fact.phone) : facts;
   const names: Record<string, string> = phone ? { 'original gravity': 'pitched at', attenuation: 'fallen', 'strength so far': 'strength' } : {};
-  const order = phone ? ['now', 'last known', 'attenuation', 'strength so far', 'original gravity'] : shown.map((fact) => fact.name);
+  const order = phone ? ['now', 'last known', 'attenuation', 'strength so far', 'original gravity', 'room', 'foam'] : shown.map((fact) => fact.name);
   const ordered = order.flatMap((name) => shown.find((fact) => fact.name === name) ?? []);
   return (
-    <dl className={phone ? 'grid grid-cols-4 border-b' : 'mt-[14px] grid grid-cols-4 border-t wide:flex'}>
+    <dl className={phone ? 'grid grid-cols-4 border-b' : 'mt-[14px] grid grid-cols-4 border-t wide:flex wide:flex-wrap'}>
       {ordered.map((fact, index) => (
-        <div key={fact.name} className={phone ? `border-rule py-2 ${index === 0 ? 'pl-(--margin)' : 'border-l pl-2'}` : `flex-auto py-2 pr-3 ${index === 0 ? '' : index % 4 === 0 ? 'wide:border-l wide:pl-3' : 'border-l pl-3'}`}>
+        <div key={fact.name} className={phone ? `border-rule py-2 ${index > 3 ? 'border-t' : ''} ${index % 4 === 0 ? 'pl-(--margin)' : 'border-l pl-2'}` : `flex-auto py-2 pr-3 ${index === 0 ? '' : index % 4 === 0 ? 'wide:border-l wide:pl-3' : 'border-l pl-3'}`}>
           <dt className="type-label truncate text-[0.71875rem] text-ink2">{names[fact.name] ?? fact.name}</dt>
           <dd className="whitespace-nowrap font-mono text-[0.96875rem] font-semibold leading-5">
             {fact.figure}

@@ -14,6 +14,7 @@ import { useNow } from '@/components/ui/now';
 import { EmptyVessel } from '@/components/vessel/Vessel';
 import { vesselOf } from '@/components/vessel/describe';
 import { useBatch, useJudgement, useSeries, useVerdictChanges } from '@/lib/client/batches';
+import { useSurroundings } from '@/lib/client/sensors';
 import { useEntries } from '@/lib/client/entries';
 import { useMe } from '@/lib/client/me';
 import type { BatchBody, EntryBody, SeriesBody } from '@/lib/contracts/batches';
@@ -116,7 +117,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
 
   const rows = useMemo(() => (judged ? callRows(batch, judged, now, timeZone) : []), [batch, judged, now, timeZone]);
   const log = useMemo(() => logRows(entries ?? [], changes ?? []), [entries, changes]);
-  const facts = factsOf(shown, last, now, timeZone);
+  const facts = factsOf(shown, last, now, timeZone, useSurroundings(batch.id).data?.probes);
   const racked = judged?.stage === 'terminal' && (entries ?? []).some((entry) => entry.kind === 'rack');
   const vessel = vesselOf(shown, racked);
 

@@ -1,5 +1,5 @@
-import { createEntry, updateEntry, type CLARITIES, type EntryBody, type EntryDetail, type FOAMS, type INSTRUMENTS, type LOGGED_KINDS, type SUBSTANCES, type UpdateEntry } from '@/lib/contracts/batches';
-import type { Neck } from '@/lib/core/types';
+import { createEntry, updateEntry, type CLARITIES, type EntryBody, type EntryDetail, type INSTRUMENTS, type LOGGED_KINDS, type SUBSTANCES, type UpdateEntry } from '@/lib/contracts/batches';
+import type { Foam, Neck } from '@/lib/core/types';
 import type { NewEntry } from '@/lib/client/entries';
 import { instantOf, wallTime } from '@/components/charts/zone';
 import { typedGravity, typedNumber } from './figures';
@@ -20,7 +20,7 @@ export interface EntryDraft {
   calibratedAt: string;
   ph: string;
   bubbles: string;
-  foam: (typeof FOAMS)[number] | '';
+  foam: Foam | '';
   clarity: (typeof CLARITIES)[number] | '';
   smell: string;
   taste: string;

@@ -1,6 +1,8 @@
 import type { BatchBody } from '@/lib/contracts/batches';
 import { clock, dayName, dayRange, when } from '@/components/charts/zone';
-import { doubt, gravityText, percent } from './figures';
+import type { ProbeBody } from '@/lib/contracts/surroundings';
+import type { Foam } from '@/lib/core/types';
+import { degrees, doubt, gravityText, percent } from './figures';
 import { dayOf } from './words';
 
 /** One place of the ruled line under a batch's name. */
@@ -27,8 +29,20 @@ export interface LastReading {
   gravity: number;
 }
 
+const FOAM_WORDS: Record<Foam, string> = { none: 'none', ring: 'a ring', cover: 'covers it', at_neck: 'at the neck' };
+
+/** What room and foam probes say; one that is silent is named with nothing beside it. */
+function probeFacts(probes: readonly ProbeBody[]): Fact[] {
+  const room = probes.find((probe) => probe.kind === 'room' && probe.temperature_c !== null) ?? probes.find((probe) => probe.kind === 'room');
+  const foam = probes.find((probe) => probe.foam !== null) ?? probes.find((probe) => probe.kind === 'foam');
+  return [
+    ...(room ? [{ name: 'room', figure: room.temperature_c === null ? 'not heard' : degrees(room.temperature_c), more: room.name, phone: true }] : []),
+    ...(foam ? [{ name: 'foam', figure: foam.foam_mm === null ? 'not heard' : `${Math.round(foam.foam_mm)} mm`, more: foam.foam === null ? foam.name : FOAM_WORDS[foam.foam], phone: true }] : []),
+  ];
+}
+
 /** What a reader wants at once, in the order of the fall. `now` in seconds since 1970. */
-export function factsOf(batch: BatchBody, last: LastReading | null, now: number, timeZone: string): Fact[] {
+export function factsOf(batch: BatchBody, last: LastReading | null, now: number, timeZone: string, probes: readonly ProbeBody[] = []): Fact[] {
   const { assessment: judged, original_gravity: og } = batch;
   const seconds = (iso: string) => Date.parse(iso) / 1000;
   const day = dayOf(batch.pitched_at, now);
@@ -51,5 +65,6 @@ export function factsOf(batch: BatchBody, last: LastReading | null, now: number,
       phone: false,
     },
     { name: 'sensor', figure: batch.sensor?.name ?? 'none', more: heard ? `heard ${now - seconds(heard) < 43_200 ? clock(seconds(heard), timeZone) : when(seconds(heard), now, timeZone)}` : batch.sensor ? 'not heard yet' : null, phone: false },
+    ...probeFacts(probes),
   ];
 }

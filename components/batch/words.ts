@@ -1,5 +1,5 @@
-import type { DrinkKind, Neck, Stage } from '@/lib/core/types';
-import type { BatchBody, CLARITIES, FOAMS, SUBSTANCES } from '@/lib/contracts/batches';
+import type { DrinkKind, Foam, Neck, Stage } from '@/lib/core/types';
+import type { BatchBody, CLARITIES, SUBSTANCES } from '@/lib/contracts/batches';
 import { litres } from './figures';
 
 export const KIND_WORDS: Record<DrinkKind, string> = { beer: 'beer', cider: 'cider or perry', mead: 'mead', wine: 'country wine' };
@@ -28,7 +28,7 @@ export function dayOf(pitchedAt: string | null, nowS: number): number | null {
 }
 
 export const CLARITY_WORDS: Record<(typeof CLARITIES)[number], string> = { cloudy: 'cloudy', hazy: 'hazy', clearing: 'clearing', bright: 'bright' };
-export const FOAM_WORDS: Record<(typeof FOAMS)[number], string> = { none: 'none', ring: 'a ring', cover: 'a cover', at_neck: 'at the neck' };
+export const FOAM_WORDS: Record<Foam, string> = { none: 'none', ring: 'a ring', cover: 'a cover', at_neck: 'at the neck' };
 export const SUBSTANCE_WORDS: Record<(typeof SUBSTANCES)[number], string> = {
   sugar: 'sugar',
   honey: 'honey',

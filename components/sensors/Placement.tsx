@@ -1,7 +1,7 @@
 'use client';
 
 import Link from 'next/link';
-import { useState } from 'react';
+import { useId, useState } from 'react';
 import { dayName } from '@/components/charts/zone';
 import { Button } from '@/components/ui/Button';
 import { Field, Select } from '@/components/ui/Field';
@@ -30,6 +30,39 @@ export function useSensorChange(id: string) {
     }
   }
   return { busy, failed, change };
+}
+
+/** The room that a room probe hangs in, by the name that batches give their place. */
+export function Hanging({ sensor, mayAssign }: { sensor: SensorBody; mayAssign: boolean }) {
+  const { batches } = useBatches({ state: 'working' });
+  const { busy, failed, change } = useSensorChange(sensor.id);
+  const [place, setPlace] = useState(sensor.place ?? '');
+  const list = useId();
+  const places = [...new Set((batches ?? []).flatMap((batch) => batch.place ?? []))].sort((a, b) => a.localeCompare(b, 'en', { numeric: true }));
+  const sharing = sensor.place === null ? [] : (batches ?? []).filter((batch) => batch.place?.trim().toLowerCase() === sensor.place?.trim().toLowerCase());
+  return (
+    <section aria-label="In which place" className="flex flex-col gap-3 border-b px-(--margin) py-4">
+      <p className="type-body">
+        {sensor.place === null
+          ? 'It hangs in no place. Name one, and the batches standing there show its temperature.'
+          : `It hangs in ${sensor.place}. ${sharing.length === 0 ? 'No batch stands there now.' : `${sharing.map((batch) => batch.name).join(', ')} ${sharing.length === 1 ? 'stands' : 'stand'} there and ${sharing.length === 1 ? 'shows' : 'show'} its temperature.`}`}
+      </p>
+      {failed && <FormError>{failed}</FormError>}
+      {mayAssign && (
+        <form className="flex flex-wrap items-end gap-2" onSubmit={(event) => (event.preventDefault(), void change({ place: place.trim() || null }))}>
+          <Field label="it hangs in" list={list} maxLength={80} autoComplete="off" value={place} onChange={(event) => setPlace(event.target.value)} className="min-w-48 flex-1" hint="a place as the batches name it; empty: none" />
+          <datalist id={list}>
+            {places.map((name) => (
+              <option key={name} value={name} />
+            ))}
+          </datalist>
+          <Button type="submit" disabled={busy || place.trim() === (sensor.place ?? '')} className="mb-[22px]">
+            Keep it so
+          </Button>
+        </form>
+      )}
+    </section>
+  );
 }
 
 /** Which vessel it floats in: put in, moved, taken out. */
@@ -69,7 +102,7 @@ export function Placement({ sensor, mayAssign, timeZone, now }: { sensor: Sensor
             value={chosen}
             onChange={(event) => setChosen(event.target.value)}
             className="min-w-48 flex-1"
-            hint={taken ? `${taken.name} is in it now` : sensor.kind === 'float' ? 'one float a batch' : 'stands beside the float'}
+            hint={taken ? `${taken.name} is in it now` : sensor.kind === 'float' ? 'one float a batch' : sensor.kind === 'room' ? 'for one vessel’s own air: a cupboard, a water bath' : 'looks into its neck'}
           >
             <option value="">choose a batch</option>
             {others.map((batch) => (

@@ -15,7 +15,7 @@ import { ConnectLines, type Doors } from './ConnectLines';
 import { Credential } from './Credential';
 import { Health, RefusedReasons } from './Health';
 import { Naming } from './Naming';
-import { Placement, useSensorChange } from './Placement';
+import { Hanging, Placement, useSensorChange } from './Placement';
 import { ProbeReadings } from './ProbeReadings';
 import { Refusals } from './Refusals';
 import { SecretShown } from './SecretShown';
@@ -103,6 +103,12 @@ export function SensorPage({ id, doors }: { id: string; doors: Doors }) {
         <div className="max-wide:order-1 wide:border-l">
           <GroupBar word="Health" />
           <Health sensor={sensor} now={now} timeZone={timeZone} />
+          {sensor.kind === 'room' && (
+            <>
+              <GroupBar word="Place" />
+              <Hanging sensor={sensor} mayAssign={may('sensors.assign')} />
+            </>
+          )}
           <GroupBar word="Vessel" />
           <Placement sensor={sensor} mayAssign={may('sensors.assign')} timeZone={timeZone} now={now} />
         </div>

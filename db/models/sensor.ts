@@ -9,6 +9,8 @@ export class Sensor extends Model<InferAttributes<Sensor>, InferCreationAttribut
   /** `file`: carries what an import brought, and speaks to nobody. */
   declare kind: CreationOptional<'float' | 'room' | 'foam' | 'file'>;
   declare intervalS: CreationOptional<number>;
+  /** Where a room probe hangs. */
+  declare place: CreationOptional<string | null>;
   declare disabledAt: CreationOptional<Date | null>;
   /** Removed sensors keep their row: what they measured stays where it counted. */
   declare removedAt: CreationOptional<Date | null>;
@@ -31,6 +33,7 @@ export class Sensor extends Model<InferAttributes<Sensor>, InferCreationAttribut
         name: DataTypes.TEXT,
         kind: DataTypes.TEXT,
         intervalS: DataTypes.INTEGER,
+        place: DataTypes.TEXT,
         disabledAt: DataTypes.DATE,
         removedAt: DataTypes.DATE,
         settingsVersion: DataTypes.INTEGER,

@@ -7,6 +7,7 @@ export interface SensorRow {
   kind: 'float' | 'room' | 'foam' | 'file';
   intervalS: number;
   disabledAt: Date | null;
+  place: string | null;
   createdAt: Date;
   createdAtText: string;
   settingsVersion: number;
@@ -33,7 +34,7 @@ export function findSensors(filter: SensorFilter, transaction?: Transaction): Pr
   if (filter.identifier !== undefined) conditions.push('s.identifier = $identifier');
   if (filter.after) conditions.push('(s.created_at, s.identifier) > ($afterAt::timestamptz, $afterKey)');
   return database().query<SensorRow>(
-    `select s.identifier, s.name, s.kind, s.interval_s as "intervalS", s.disabled_at as "disabledAt", s.created_at as "createdAt", s.created_at::text as "createdAtText",
+    `select s.identifier, s.name, s.kind, s.interval_s as "intervalS", s.disabled_at as "disabledAt", s.place, s.created_at as "createdAt", s.created_at::text as "createdAtText",
        s.settings_version as "settingsVersion", s.wanted_interval_s as "wantedIntervalS", s.settings_at as "settingsAt", s.confirmed_version as "confirmedVersion", s.confirmed_at as "confirmedAt",
        (select json_build_object('version', c.version, 'appliesFrom', c.applies_from) from calibrations c where c.sensor_id = s.id and c.removed_at is null and c.applies_from <= now() order by c.applies_from desc, c.id desc limit 1) as calibration,
        a.batch,

@@ -1,6 +1,7 @@
 'use client';
 
 import type { z } from 'zod';
+import type { SurroundingsBody } from '../contracts/surroundings';
 import type { CreatedSensorBody, createSensor as createSensorSchema, rawReadingList, refusedList, SensorBody, SensorHealthBody, SensorLimits, sensorList, stayList, UpdateSensor } from '../contracts/sensors';
 import { sendJson, withQuery } from './fetcher';
 import { isPath, refresh, useResource } from './use-resource';
@@ -38,6 +39,8 @@ export async function updateSensor(id: string, input: UpdateSensor): Promise<Sen
 export const useSensorHealth = (id: string) => useResource<SensorHealthBody>(`/sensors/${id}/health`);
 export const useStays = (id: string) => useResource<z.infer<typeof stayList>>(`/sensors/${id}/stays`);
 export const useRawReadings = (id: string, limit: number, everyMs = 0) => useResource<z.infer<typeof rawReadingList>>(withQuery(`/sensors/${id}/readings`, { limit }), { refreshInterval: everyMs });
+/** What the probes around a batch say; asked again by the minute, since they speak on their own. */
+export const useSurroundings = (batchId: string) => useResource<SurroundingsBody>(`/batches/${batchId}/surroundings`, { refreshInterval: 60_000 });
 export const useSensorLimits = () => useResource<SensorLimits>('/sensor-limits');
 
 const ofSensors = (path: string) => path.startsWith('/sensors') || path.startsWith('/batches') || isPath('/shelf')(path);

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { CALL_NAMES, DRINK_KINDS, NECKS, VERDICTS } from '../core/types';
+import { CALL_NAMES, DRINK_KINDS, FOAMS, NECKS, VERDICTS } from '../core/types';
 import { assessmentSchema } from './assessment';
 import { gravity, id, line, temperatureC, text, timestamp } from './common';
 
@@ -117,7 +117,6 @@ export const ENTRY_KINDS = ['pitch', 'reading', 'observation', 'neck', 'rack', '
 export const LOGGED_KINDS = ['pitch', 'reading', 'observation', 'neck', 'rack', 'addition', 'top_up', 'stabilise', 'note', 'overrule'] as const;
 
 export const CLARITIES = ['cloudy', 'hazy', 'clearing', 'bright'] as const;
-export const FOAMS = ['none', 'ring', 'cover', 'at_neck'] as const;
 export const INSTRUMENTS = ['hydrometer', 'refractometer'] as const;
 /** What an addition is made of. */
 export const SUBSTANCES = ['sugar', 'honey', 'fruit', 'juice', 'nutrient', 'acid', 'chalk', 'tannin', 'enzyme', 'sulphite', 'sorbate', 'sweetener', 'fining', 'yeast', 'spice', 'water', 'other'] as const;

@@ -1,7 +1,8 @@
 import { z } from 'zod';
 import { calibrationForm, calibrationPointForm, calibrationPointSchema, calibrationSchema, calibrationVersionSchema, offsetForm, pairForm } from './calibration';
 import { id } from './common';
-import { endpoint } from './endpoint';
+import { byId, endpoint } from './endpoint';
+import { surroundingsSchema } from './surroundings';
 import { createdSensorSchema, rawReadingList, rawReadingQuery, sensorHealthSchema, sensorLimits, sensorSchema, sensorSettingsForm, stayList } from './sensors';
 
 /** A sensor's identifier is not a UUID. */
@@ -16,6 +17,7 @@ export const endpointsSensors = {
   getSensorHealth: endpoint({ method: 'GET', path: '/sensors/{id}/health', summary: 'Silence, gaps, cell, signal, clock, refusals, against the cellar’s limits', access: 'sensors.read', params: bySensor, response: sensorHealthSchema, status: 200 }),
   listStays: endpoint({ method: 'GET', path: '/sensors/{id}/stays', summary: 'Which batches a sensor was in, from when to when', access: 'sensors.read', params: bySensor, response: stayList, status: 200 }),
   listRawReadings: endpoint({ method: 'GET', path: '/sensors/{id}/readings', summary: 'A sensor’s latest readings as it sent them', access: 'sensors.read', params: bySensor, query: rawReadingQuery, response: rawReadingList, status: 200 }),
+  getSurroundings: endpoint({ method: 'GET', path: '/batches/{id}/surroundings', summary: 'What room and foam probes beside a batch and in its place say', access: 'batches.read', params: byId, response: surroundingsSchema, status: 200 }),
   getSensorLimits: endpoint({ method: 'GET', path: '/sensor-limits', summary: 'When the cellar wants to be told of its sensors', access: 'sensors.read', response: sensorLimits, status: 200 }),
   setSensorLimits: endpoint({ method: 'PATCH', path: '/sensor-limits', summary: 'Change when the cellar wants to be told of its sensors', access: 'sensors.manage', body: sensorLimits.partial(), response: sensorLimits, status: 200 }),
 

@@ -19,6 +19,8 @@ export const updateSensor = z.object({
   interval_s: createSensor.shape.interval_s.unwrap().optional(),
   disabled: z.boolean().optional(),
   batch_id: id.nullable().optional(),
+  /** Where a room probe hangs: the batches standing there share it. */
+  place: line(80).nullable().optional(),
   /** Since when it is there, or out of there; absent: now. */
   since: timestamp.optional(),
 });
@@ -31,6 +33,8 @@ export const sensorSchema = z.object({
   kind: z.enum(SENSOR_KINDS),
   interval_s: z.number(),
   disabled: z.boolean(),
+  /** Where a room probe hangs. */
+  place: z.string().nullable(),
   created_at: z.string(),
   batch: z.object({ id, name: z.string(), since: z.string() }).nullable(),
   last: z

@@ -24,6 +24,10 @@ export interface Reading {
 export const NECKS = ['blow_off', 'airlock', 'bung', 'open'] as const;
 export type Neck = (typeof NECKS)[number];
 
+export const FOAMS = ['none', 'ring', 'cover', 'at_neck'] as const;
+/** What foam stands on the drink: `ring` at the glass, `cover` all over it, `at_neck` about to leave the vessel. */
+export type Foam = (typeof FOAMS)[number];
+
 export const EVENT_KINDS = ['reading', 'rack', 'addition', 'top_up', 'neck', 'stabilise', 'note'] as const;
 /**
  * `reading` is a hydrometer reading already corrected to 20 °C. A `note` that
@@ -45,6 +49,8 @@ export interface BatchEvent {
   /** Of liquid that goes in: its gravity were its alcohol sugar still; absent: `gravity`, which is right for a must. */
   originalGravity?: number | null;
   neck?: Neck | null;
+  /** Foam that somebody or a probe saw. */
+  foam?: Foam | null;
   /** When this became known; absent: at once. Lets the past be judged by what was known then. */
   knownAt?: Instant | null;
 }
@@ -63,6 +69,8 @@ export interface BatchSetup {
   temperature: { minC: number; maxC: number } | null;
   /** What closes the neck now, if told; the last neck event wins. */
   neck?: Neck | null;
+  /** Temperature of the room it stands in, °C; absent or null: not measured. */
+  roomC?: number | null;
   events: readonly BatchEvent[];
   /** IANA zone in which sentences name days and hours; absent: UTC. */
   timeZone?: string;

@@ -38,6 +38,7 @@ export const SHELF_SPAN = 'from=2026-03-01T00:00:00Z&to=2026-03-02T00:00:00Z';
 
 /** Written out by hand on purpose: it says what the policies should be, and is not made from them. */
 export const watchRows = {
+  getSurroundings: { may: EVERYBODY, good: 200, names: true, path: (t) => `/batches/${t.batchId}/surroundings` },
   getMe: { may: EVERYBODY, good: 200, path: () => '/me' },
   listSignIns: { may: EVERYBODY, good: 200, path: () => '/sign-ins' },
   endAllSignIns: { may: EVERYBODY, good: 204, path: () => '/sign-ins' },

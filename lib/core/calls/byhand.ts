@@ -2,6 +2,8 @@ import type { Call, CallName } from '../types';
 import { gasLPerH, VOLUMES_PER_POINT } from '../gas/gas';
 import { handRecord, type HandRecord } from '../stages/byhand';
 import { OVERDUE_H } from '../stages/watch';
+import { foamSeen, standsHigh } from './foam';
+import { leaveOn } from './neck';
 import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, gasWords, gravityWords, pointsWords, rateWords, spanWords } from './words';
 
@@ -58,6 +60,8 @@ function neck(scene: Scene, record: HandRecord): Call {
   const gas = rate ? gasLPerH(rate.value + 1.28 * rate.sd, watch.setup.volumeL) : null;
   const past = rate !== null && record.readings.length >= 3 && watch.segment.effectiveOg - record.last.points > 0.4 * (watch.segment.effectiveOg - watch.fgPrior().mean);
   if (gas !== null && past && gas < limit) {
+    const foam = foamSeen(watch.setup.events, scene.at);
+    if (standsHigh(foam)) return leaveOn(scene, foam, `Gas at most ${gasWords(gas)} by the last two readings.`, [evidence('gas at most', gas, limit, 'L/h')]);
     return call('yes', 'Swap tube for airlock.', `Gas at most ${gasWords(gas)} by the last two readings, under ${gasWords(limit)}.`, {
       since: sinceOf(scene, record.last.hour),
       evidence: [evidence('gas at most', gas, limit, 'L/h')],

@@ -1,5 +1,6 @@
-import type { Call } from '../types';
+import type { Call, Evidence } from '../types';
 import { gasLPerH } from '../gas/gas';
+import { foamSeen, standsHigh, type SeenFoam } from './foam';
 import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, gasWords } from './words';
 
@@ -9,8 +10,12 @@ export function neckCall(scene: Scene): Call {
   const limit = watch.swapGas();
   const figures = gas ? [evidence('gas', gas.value, limit, 'L/h')] : [];
   const changesIt = `Changes it: gas ${gasWords(limit)} for nine hours.`;
+  const foam = foamSeen(watch.setup.events, scene.at);
   if (watch.neck === 'airlock' || watch.neck === 'bung') {
     const busy = gas !== null && gas.lo > 1.3 * limit;
+    if (foam?.foam === 'at_neck') {
+      return call('hold', 'Foam is at the airlock.', `${foamWords(scene, foam)}${gas ? ` Gas ${gasWords(gas.value)}.` : ''}`, { since: foam.at, evidence: figures, act: 'Put the blow-off tube back on.', changesIt: 'Changes it: foam down to a ring.' });
+    }
     if (busy) {
       return call('hold', 'Foam may reach the airlock.', `Gas ${gasWords(gas.value)}; an airlock here is safe under ${gasWords(limit)}.`, {
         evidence: figures,
@@ -25,6 +30,7 @@ export function neckCall(scene: Scene): Call {
     });
   }
   if (watch.airlock.on) {
+    if (standsHigh(foam)) return leaveOn(scene, foam, gas ? `Gas is low, ${gasWords(gas.value)}.` : null, figures);
     const since = sinceOf(scene, watch.airlock.since);
     return call('yes', `Swap tube for airlock: from ${since === null ? 'now' : when(scene, since)}.`, gas ? `Krausen falling; gas ${gasWords(gas.value)}, under ${gasWords(limit)}.` : 'Krausen falling.', {
       since,
@@ -50,6 +56,12 @@ export function neckCall(scene: Scene): Call {
     changesIt,
   });
 }
+
+const foamWords = (scene: Scene, foam: SeenFoam): string => `Foam ${foam.foam === 'at_neck' ? 'stood at the neck' : 'covered the drink'} ${when(scene, foam.at)}.`;
+
+/** What would be time to swap, were there not foam that could reach an airlock. */
+export const leaveOn = (scene: Scene, foam: SeenFoam, gas: string | null, figures: readonly Evidence[]): Call =>
+  call('hold', 'Leave the tube on: foam stands high.', [foamWords(scene, foam), gas].filter(Boolean).join(' '), { since: foam.at, evidence: figures, act: 'Look at the foam again tomorrow.', changesIt: 'Changes it: foam down to a ring.' });
 
 /** Hours until the curve's gas is under the limit, with the nine hours it must stay there; null without a curve. */
 function hoursToSwap(scene: Scene, limit: number): number | null {

@@ -16,6 +16,7 @@ import { notifyChange } from '@/lib/services/changes';
 import { overrulingsOf } from '@/lib/services/entries/overrule';
 import { jobsFromCalls } from '@/lib/services/jobs/from-calls';
 import { setupOf } from './setup';
+import { surroundingsAt } from './surroundings';
 
 /** Points of the curve that the shelf's lanes get; the batch page asks for all. */
 const LANE_POINTS = 120;
@@ -48,7 +49,7 @@ export function assessBatch(batchId: string, { clock = systemClock, silenceCount
     const mark = (await judgementMark(batch.cellarId, batchId, transaction)) ?? '';
     const entries = await Entry.findAll({ where: { batchId, removedAt: { [Op.is]: null } }, transaction });
     const readings = await readingsOfBatch(batchId, at, transaction);
-    const setup = setupOf(batch, entries, cellar.timeZone);
+    const setup = setupOf(batch, entries, cellar.timeZone, await surroundingsAt(batchId, at, transaction));
     const judgement = assess(setup, readings, at);
 
     await keep(batch, presentJudgement(judgement), mark, new Date(at), transaction);

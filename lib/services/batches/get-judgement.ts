@@ -10,6 +10,7 @@ import { presentJudgement, type AssessmentBody, type assessmentQuery, type Drawn
 import { assess } from '@/lib/core/assess';
 import { InvalidError, NotFoundError } from '@/lib/errors';
 import { setupOf } from './setup';
+import { surroundingsAt } from './surroundings';
 
 type Query = z.infer<typeof assessmentQuery>;
 /** What was kept before there was a footing has none until the next judgement. */
@@ -39,13 +40,14 @@ function recall(key: string, make: () => Promise<Drawn>): Promise<Drawn> {
 async function judge(batchId: string, asked: number | null, now: number): Promise<Drawn> {
   const batch = await Batch.findByPk(batchId, { rejectOnEmpty: new NotFoundError('batch') });
   const at = asked ?? batch.endedAt?.getTime() ?? now;
-  const [cellar, entries, readings] = await Promise.all([
+  const [cellar, entries, readings, around] = await Promise.all([
     Cellar.findByPk(batch.cellarId, { rejectOnEmpty: true }),
     // What was taken back later still counted then.
     Entry.findAll({ where: { batchId: batch.id, removedAt: { [Op.or]: [{ [Op.is]: null }, { [Op.gt]: new Date(at) }] } } }),
     readingsOfBatch(batch.id, at),
+    surroundingsAt(batch.id, at),
   ]);
-  return presentJudgement(assess(setupOf(batch, entries, cellar.timeZone), readings, at));
+  return presentJudgement(assess(setupOf(batch, entries, cellar.timeZone, around), readings, at));
 }
 
 /** Whether the judgement kept will do: it knows all that was logged, or what it does not know is just being judged. */

@@ -1,5 +1,6 @@
 import type { Batch, Entry } from '@/db/models';
 import type { EntryDetail, SUBSTANCES } from '@/lib/contracts/batches';
+import type { Surroundings } from './surroundings';
 import { EVENT_KINDS, type BatchEvent, type BatchSetup, type EventKind } from '@/lib/core/types';
 
 /** The columns that the judgement reads. */
@@ -39,6 +40,7 @@ function eventOf(entry: EntryFacts): BatchEvent[] {
       gravity,
       neck,
       knownAt: entry.createdAt.getTime(),
+      ...(detail.foam && { foam: detail.foam }),
       ...(detail.instrument === 'refractometer' && { gravitySd: REFRACTOMETER_SD }),
       // A drink that is poured in has used up sugar that its gravity no longer shows.
       ...(kind === 'top_up' && typeof detail.original_gravity === 'number' && { originalGravity: detail.original_gravity }),
@@ -50,8 +52,9 @@ function eventOf(entry: EntryFacts): BatchEvent[] {
  * What is known of a batch apart from its sensor, as the core takes it. A hand
  * reading's gravity was corrected to 20 °C when it was logged.
  * @param entries those not taken back, in any order
+ * @param around what the probes of the room and the foam say
  */
-export function setupOf(batch: BatchFacts, entries: readonly EntryFacts[], timeZone: string): BatchSetup {
+export function setupOf(batch: BatchFacts, entries: readonly EntryFacts[], timeZone: string, around: Surroundings = { roomC: null, events: [] }): BatchSetup {
   const { attenuationMinPercent: attenuationMin, attenuationMaxPercent: attenuationMax, temperatureMinC: minC, temperatureMaxC: maxC } = batch;
   return {
     kind: batch.kind,
@@ -63,7 +66,8 @@ export function setupOf(batch: BatchFacts, entries: readonly EntryFacts[], timeZ
     alcoholToleranceAbv: batch.alcoholToleranceAbv,
     temperature: minC === null || maxC === null ? null : { minC, maxC },
     neck: batch.neck,
-    events: entries.flatMap(eventOf).sort((a, b) => a.at - b.at),
+    roomC: around.roomC,
+    events: [...entries.flatMap(eventOf), ...around.events].sort((a, b) => a.at - b.at),
     timeZone,
   };
 }

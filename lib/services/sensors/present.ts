@@ -11,6 +11,7 @@ export function presentSensor(row: SensorRow): SensorBody {
     kind: row.kind === 'file' ? 'float' : row.kind,
     interval_s: row.intervalS,
     disabled: row.disabledAt !== null,
+    place: row.place,
     created_at: iso(row.createdAt),
     batch: row.batch && { id: row.batch.id, name: row.batch.name, since: iso(row.batch.since) },
     last: row.last && {

@@ -22,6 +22,10 @@ export async function updateSensor(actor: Actor, identifier: string, input: Upda
     if (input.name !== undefined) sensor.set('name', input.name);
     if (input.interval_s !== undefined) sensor.set('intervalS', input.interval_s);
     if (input.disabled !== undefined) sensor.set('disabledAt', input.disabled ? (sensor.disabledAt ?? now) : null);
+    if (input.place !== undefined) {
+      if (input.place !== null && sensor.kind !== 'room') throw new InvalidError('Only a room probe hangs in a place.', { place: ['only a room probe hangs in a place'] });
+      sensor.set('place', input.place);
+    }
     await sensor.save({ transaction });
 
     const touched = new Set<string | null>([null]);
