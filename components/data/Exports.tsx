@@ -7,7 +7,7 @@ import { GroupBar } from '@/components/ui/Page';
 import { useBatches } from '@/lib/client/batches';
 
 const TABLES = [
-  { file: 'export.json', name: 'Archive (JSON)', says: 'Batches with their logs and every reading. This house reads it back as it was.' },
+  { file: 'export.json', name: 'Archive (JSON)', says: 'All of it: musts, batches, logs, readings, lots, tastings, photos, jobs, rules. This house reads it back as it was.' },
   { file: 'export/readings.csv', name: 'Readings (CSV)', says: 'What the floats measured, a line a reading.' },
   { file: 'export/log.csv', name: 'Log (CSV)', says: 'What was done and read by hand.' },
   { file: 'export/batches.csv', name: 'Batches (CSV)', says: 'Their names, dates, gravities and volumes.' },
@@ -47,7 +47,7 @@ export function Exports() {
         <a href="/api/v1/archive.schema.json" className="underline underline-offset-2">
           JSON Schema
         </a>
-        . Bottles, must sheets and photos are not in it: a backup holds all there is. Cells of a CSV that a spreadsheet would run begin with a quote; bringing them in takes it off again.
+        . Secrets of sensors, tokens and links stay here, and so does the trail, which has an export of its own. Cells of a CSV that a spreadsheet would run begin with a quote; bringing them in takes it off again.
       </p>
     </section>
   );

@@ -7,7 +7,7 @@ import { Select } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
 import { GroupBar } from '@/components/ui/Page';
 import { useWork } from '@/components/sensors/use-work';
-import { IMPORT_LIMIT_BYTES, type ImportPreviewBody } from '@/lib/contracts/imports';
+import { ARCHIVE_LIMIT_BYTES, IMPORT_LIMIT_BYTES, type ImportPreviewBody } from '@/lib/contracts/imports';
 import { useBatches } from '@/lib/client/batches';
 import { keepFile, lookAtFile } from '@/lib/client/imports';
 import { ClientError } from '@/lib/client/fetcher';
@@ -22,7 +22,7 @@ const KINDS: readonly { value: Kind; name: string }[] = [
 const SAYS: Record<Kind, string> = {
   readings: 'A CSV that a logger wrote: a time and a gravity in each line, temperature where there is one.',
   batches: 'A CSV with a line for each batch you made before: name, dates, gravities, litres, notes.',
-  archive: 'The JSON that this page saves, of this house or another.',
+  archive: 'The JSON that this page saves, of this house or another. It comes in beside what is here.',
 };
 
 type Looked = { file: { file_name: string; text: string }; preview: ImportPreviewBody };
@@ -57,7 +57,8 @@ export function ImportFile() {
     setDone(null);
     setLooked(null);
     await run(async () => {
-      if (file.size > IMPORT_LIMIT_BYTES) throw new ClientError(413, 'too-large', `${file.name} is larger than ${IMPORT_LIMIT_BYTES / 1e6} MB. Cut it in parts.`);
+      const limit = kind === 'archive' ? ARCHIVE_LIMIT_BYTES : IMPORT_LIMIT_BYTES;
+      if (file.size > limit) throw new ClientError(413, 'too-large', `${file.name} is larger than ${limit / 1e6} MB. ${kind === 'archive' ? 'Take it out batch by batch, or use a backup.' : 'Cut it in parts.'}`);
       const given = { file_name: file.name.slice(0, 120), text: await file.text() };
       setLooked({ file: given, preview: await lookAtFile(formOf(kind, given, null) as Parameters<typeof lookAtFile>[0]) });
     });

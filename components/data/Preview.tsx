@@ -19,13 +19,18 @@ export function Preview({ preview, onChoose }: { preview: ImportPreviewBody; onC
       <div className="border-b bg-lit px-(--margin) py-3">
         <State state={preview.good === 0 ? 'Stop' : preview.bad > 0 ? 'Check' : 'Ready'} word={preview.good === 0 ? 'Nothing to keep' : preview.bad > 0 ? 'Some lines left out' : 'All understood'} />
         <p className="type-verdict-now">
-          <Sentence strong>{`${preview.good} ${preview.good === 1 ? 'line' : 'lines'} understood${preview.bad > 0 ? `, ${preview.bad} not` : ''}.`}</Sentence>
+          <Sentence strong>{`${preview.good} ${preview.kind === 'archive' ? (preview.good === 1 ? 'batch' : 'batches') : preview.good === 1 ? 'line' : 'lines'} understood${preview.bad > 0 ? `, ${preview.bad} not` : ''}.`}</Sentence>
         </p>
         {preview.from && (
           <p className="type-reason text-ink2">
             From <span className="fig">{day(preview.from)}</span> to <span className="fig">{day(preview.to)}</span>.
           </p>
         )}
+        {preview.notes.map((note) => (
+          <p key={note} className="type-reason text-ink2">
+            {note}
+          </p>
+        ))}
       </div>
       {preview.header.length > 0 && (
         <div className="flex flex-wrap items-start gap-3 border-b px-(--margin) py-4">
@@ -63,7 +68,7 @@ export function Preview({ preview, onChoose }: { preview: ImportPreviewBody; onC
         <ol className="min-w-0" aria-label="As it would be kept">
           {preview.read.map((row) => (
             <li key={row.line} className="grid grid-cols-[4.5rem_minmax(0,1fr)] border-b border-rule px-(--margin) py-1.5">
-              <span className="type-label text-ink2">line {row.line}</span>
+              <span className="type-label text-ink2">{preview.kind === 'archive' ? 'batch' : 'line'} {row.line}</span>
               <span className="break-words font-mono text-[0.8125rem]">{row.says}</span>
             </li>
           ))}

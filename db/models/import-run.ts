@@ -8,6 +8,8 @@ export class ImportRun extends Model<InferAttributes<ImportRun>, InferCreationAt
   declare counts: Record<string, number>;
   declare sensorId: CreationOptional<number | null>;
   declare batchId: CreationOptional<string | null>;
+  /** Ids of what no batch takes along, by table. */
+  declare made: CreationOptional<object>;
   declare createdBy: CreationOptional<string | null>;
   declare createdAt: CreationOptional<Date>;
   declare undoneAt: CreationOptional<Date | null>;
@@ -23,6 +25,7 @@ export class ImportRun extends Model<InferAttributes<ImportRun>, InferCreationAt
         counts: DataTypes.JSONB,
         sensorId: DataTypes.INTEGER,
         batchId: DataTypes.UUID,
+        made: DataTypes.JSONB,
         createdBy: DataTypes.UUID,
         createdAt: DataTypes.DATE,
         undoneAt: DataTypes.DATE,

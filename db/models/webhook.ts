@@ -8,6 +8,10 @@ export class Webhook extends Model<InferAttributes<Webhook>, InferCreationAttrib
   declare secret: Buffer;
   declare note: CreationOptional<string | null>;
   declare disabledAt: CreationOptional<Date | null>;
+  /** Since when no delivery arrives. */
+  declare failingSince: CreationOptional<Date | null>;
+  /** Switched off because none arrived for long. */
+  declare givenUpAt: CreationOptional<Date | null>;
   declare createdBy: CreationOptional<string | null>;
   declare createdAt: CreationOptional<Date>;
 
@@ -21,6 +25,8 @@ export class Webhook extends Model<InferAttributes<Webhook>, InferCreationAttrib
         secret: DataTypes.BLOB,
         note: DataTypes.TEXT,
         disabledAt: DataTypes.DATE,
+        failingSince: DataTypes.DATE,
+        givenUpAt: DataTypes.DATE,
         createdBy: DataTypes.UUID,
         createdAt: DataTypes.DATE,
       },

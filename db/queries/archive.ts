@@ -27,16 +27,49 @@ export interface ArchiveReading {
   signal: number | null;
   foam: number | null;
   sequence: number | null;
+  /** The version that the gravity stands by. */
+  calibration: number | null;
 }
 
 const UTC = (column: string) => `to_char(${column} at time zone 'utc', 'YYYY-MM-DD"T"HH24:MI:SS.US"Z"')`;
 
+export interface ArchiveSensor {
+  id: number;
+  name: string;
+  createdAt: Date;
+}
+
+/** Sensors with anything to take along: of the cellar, or those that were in one batch. */
+export function archiveSensors(cellarId: string, batchId: string | null): Promise<ArchiveSensor[]> {
+  const has = (table: string, more = '') => `exists (select 1 from ${table} x where x.sensor_id = s.id${more})`;
+  const inIt = ' and ($batchId::uuid is null or x.batch_id = $batchId::uuid)';
+  const alone = batchId === null ? ` or ${has('calibrations')} or ${has('calibration_points')} or ${has('readings')}` : '';
+  return database().query<ArchiveSensor>(
+    `select s.id, s.name, s.created_at as "createdAt" from sensors s where s.cellar_id = $cellarId and (${has('assignments', inIt)} or ${has('probe_assignments', inIt)}${alone}) order by s.created_at, s.id`,
+    { bind: { cellarId, batchId }, type: QueryTypes.SELECT },
+  );
+}
+
+export interface SensorStay {
+  batch: string;
+  as: 'float' | 'probe';
+  from: Date;
+  to: Date | null;
+}
+
+/** Where a sensor was, in time. */
+export function staysOf(sensorId: number, batchId: string | null): Promise<SensorStay[]> {
+  const of = (table: string, as: string) => `select a.batch_id as batch, '${as}' as "as", a.from_at as "from", a.to_at as "to", b.created_at as made, a.batch_id from ${table} a join batches b on b.id = a.batch_id where a.sensor_id = $sensorId and ($batchId::uuid is null or a.batch_id = $batchId::uuid)`;
+  return database().query<SensorStay>(`select batch, "as", "from", "to" from (${of('assignments', 'float')} union all ${of('probe_assignments', 'probe')}) t order by "from", "as", made, batch_id`, { bind: { sensorId, batchId }, type: QueryTypes.SELECT });
+}
+
 /** A stay's readings in pages, in order, each as it was kept: times to the microsecond, `real` figures in their shortest form. */
-export async function* readingsOfStay({ sensorId, from, to }: FloatStay, pageSize = 5_000): AsyncGenerator<ArchiveReading[]> {
+export async function* readingsOfStay({ sensorId, from, to }: { sensorId: number; from: Date | '-infinity'; to: Date | null }, pageSize = 5_000): AsyncGenerator<ArchiveReading[]> {
   let after: string | null = null;
   for (;;) {
     const rows: ArchiveReading[] = await database().query<ArchiveReading>(
-      `select ${UTC('measured_at')} as "measuredAt", ${UTC('received_at')} as "receivedAt", gravity, gravity_sent as "gravitySent", inclination, temperature, battery, signal, foam, sequence
+      `select ${UTC('measured_at')} as "measuredAt", ${UTC('received_at')} as "receivedAt", gravity, gravity_sent as "gravitySent", inclination, temperature, battery, signal, foam, sequence,
+              (select c.version from calibrations c where c.id = calibration_id) as calibration
        from readings where sensor_id = $sensorId and measured_at >= $from and measured_at < coalesce($to::timestamptz, 'infinity') and ($after::timestamptz is null or measured_at > $after::timestamptz)
        order by measured_at limit $limit`,
       { bind: { sensorId, from, to, after, limit: pageSize }, type: QueryTypes.SELECT },
@@ -51,9 +84,10 @@ export async function* readingsOfStay({ sensorId, from, to }: FloatStay, pageSiz
 export async function insertImported(sensorId: number, rows: readonly ArchiveReading[], transaction: Transaction): Promise<number> {
   const [result] = await database().query<{ n: number }>(
     `with stored as (
-       insert into readings (sensor_id, measured_at, received_at, gravity, gravity_sent, inclination, temperature, battery, signal, foam, sequence)
-       select $sensorId, r."measuredAt", r."receivedAt", r.gravity, r."gravitySent", r.inclination, r.temperature, r.battery, r.signal, r.foam, r.sequence
-       from jsonb_to_recordset($rows::jsonb) as r ("measuredAt" timestamptz, "receivedAt" timestamptz, gravity float8, "gravitySent" float8, inclination real, temperature real, battery real, signal real, foam real, sequence bigint)
+       insert into readings (sensor_id, measured_at, received_at, gravity, gravity_sent, inclination, temperature, battery, signal, foam, sequence, calibration_id)
+       select $sensorId, r."measuredAt", r."receivedAt", r.gravity, r."gravitySent", r.inclination, r.temperature, r.battery, r.signal, r.foam, r.sequence, c.id
+       from jsonb_to_recordset($rows::jsonb) as r ("measuredAt" timestamptz, "receivedAt" timestamptz, gravity float8, "gravitySent" float8, inclination real, temperature real, battery real, signal real, foam real, sequence bigint, calibration int)
+       left join calibrations c on c.sensor_id = $sensorId and c.version = r.calibration
        on conflict do nothing returning 1
      ) select count(*)::int as n from stored`,
     { bind: { sensorId, rows: JSON.stringify(rows) }, type: QueryTypes.SELECT, transaction },

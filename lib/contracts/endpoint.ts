@@ -21,6 +21,8 @@ export interface Endpoint {
   body?: z.ZodType;
   /** Where the body may be larger than a form. */
   limitBytes?: number;
+  /** Where it may take longer than a page waits. */
+  deadlineMs?: number;
   /** Null: no JSON body. */
   response: z.ZodType | null;
   status: 200 | 201 | 202 | 204;

@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { id } from './common';
 import { byId, endpoint } from './endpoint';
-import { IMPORT_LIMIT_BYTES, importForm, importList, importPreviewForm, importPreviewSchema, importSchema } from './imports';
+import { ARCHIVE_LIMIT_BYTES, importForm, importList, importPreviewForm, importPreviewSchema, importSchema } from './imports';
 import { byDelivery, createdWebhookSchema, createWebhook, deliveryList, updateWebhook, webhookList, webhookSchema } from './webhooks';
 import { photoFile, photoList, photoSchema, photoTarget } from './photos';
 
@@ -15,11 +15,11 @@ export const endpointsData = {
   removePhoto: endpoint({ method: 'DELETE', path: '/photos/{id}', summary: 'Take a photo off', access: 'member', params: byId, response: null, status: 204 }),
   openPhoto: endpoint({ method: 'GET', path: '/photos/{id}/{size}', summary: 'A photo’s file; the address is the key, and ends by itself', access: 'anyone', params: photoFile.params, query: photoFile.query, response: null, status: 200 }),
 
-  previewImport: endpoint({ method: 'POST', path: '/imports/preview', summary: 'Look at a file: guessed columns, the first rows as they would be kept, errors by line; nothing is kept', access: 'data.import', body: importPreviewForm, limitBytes: 2 * IMPORT_LIMIT_BYTES, response: importPreviewSchema, status: 200 }),
-  keepImport: endpoint({ method: 'POST', path: '/imports', summary: 'Keep a file that was looked at, in one step that can be undone', access: 'data.import', body: importForm, limitBytes: 2 * IMPORT_LIMIT_BYTES, response: importSchema, status: 201 }),
+  previewImport: endpoint({ method: 'POST', path: '/imports/preview', summary: 'Look at a file: guessed columns, the first rows as they would be kept, errors by line; nothing is kept', access: 'data.import', body: importPreviewForm, limitBytes: 1.5 * ARCHIVE_LIMIT_BYTES, deadlineMs: 60_000, response: importPreviewSchema, status: 200 }),
+  keepImport: endpoint({ method: 'POST', path: '/imports', summary: 'Keep a file that was looked at, in one step that can be undone', access: 'data.import', body: importForm, limitBytes: 1.5 * ARCHIVE_LIMIT_BYTES, deadlineMs: 60_000, response: importSchema, status: 201 }),
   listImports: endpoint({ method: 'GET', path: '/imports', summary: 'What was brought in, newest first', access: 'data.import', response: importList, status: 200 }),
   undoImport: endpoint({ method: 'DELETE', path: '/imports/{id}', summary: 'Take an import out again, all of it', access: 'data.import', params: byId, response: importSchema, status: 200 }),
-  exportCellar: endpoint({ method: 'GET', path: '/export.json', summary: 'Batches with their logs and readings as one archive, of one batch or of all', access: 'data.export', query: exportQuery, response: null, status: 200 }),
+  exportCellar: endpoint({ method: 'GET', path: '/export.json', summary: 'All that a cellar holds as one archive, or what belongs to one batch', access: 'data.export', query: exportQuery, response: null, status: 200 }),
   exportTable: endpoint({ method: 'GET', path: '/export/{table}', summary: 'Readings, log or batches as CSV, of one batch or of all', access: 'data.export', params: z.object({ table: z.enum(['readings.csv', 'log.csv', 'batches.csv']) }), query: exportQuery, response: null, status: 200 }),
   getArchiveSchema: endpoint({ method: 'GET', path: '/archive.schema.json', summary: 'The form of the archive as JSON Schema', access: 'anyone', response: null, status: 200 }),
 

@@ -7,12 +7,13 @@ import { id, line } from './common';
 export const IMPORT_LIMIT_BYTES = 20_000_000;
 export const IMPORT_LIMIT_ROWS = 100_000;
 
+/** An archive holds photos; at some 0.5 MB each this is a hundred of them. */
+export const ARCHIVE_LIMIT_BYTES = 60_000_000;
+
 const column = z.number().int().min(0).max(199).nullable();
-const file = {
-  file_name: line(120),
-  /** The file itself. */
-  text: z.string('must be text').min(1, 'is empty').max(IMPORT_LIMIT_BYTES, `must have at most ${IMPORT_LIMIT_BYTES / 1e6} MB`),
-};
+/** The file itself. */
+const fileText = (limit: number) => z.string('must be text').min(1, 'is empty').max(limit, `must have at most ${limit / 1e6} MB`);
+const file = { file_name: line(120), text: fileText(IMPORT_LIMIT_BYTES) };
 const common = { time_zone: z.string().max(60).optional(), date_order: z.enum(['day', 'month']).optional() };
 
 const readingsFile = z.object({
@@ -30,7 +31,7 @@ const batchesFile = z.object({
   ...common,
 });
 /** What this house exported as JSON. */
-const archiveFile = z.object({ kind: z.literal('archive'), ...file });
+const archiveFile = z.object({ kind: z.literal('archive'), file_name: line(120), text: fileText(ARCHIVE_LIMIT_BYTES) });
 
 /** A file to look at; nothing of it is kept. Columns and units left out are guessed. */
 export const importPreviewForm = z.discriminatedUnion('kind', [readingsFile, batchesFile, archiveFile]);
@@ -57,6 +58,8 @@ export const importPreviewSchema = z.object({
   good: z.number().int(),
   bad: z.number().int(),
   errors: z.array(z.object({ line: z.number().int(), says: z.string() })),
+  /** What else is worth knowing before it is kept. */
+  notes: z.array(z.string()),
   from: z.string().nullable(),
   to: z.string().nullable(),
 });

@@ -42,7 +42,7 @@ const DEADLINE_MS = 6_000;
 export function route<E extends Endpoint>(endpoint: E, handle: (context: RouteContext<E>) => Promise<Answer<E['response']>>) {
   return async (request: NextRequest, context: { params?: Promise<Record<string, string>> }): Promise<Response> => {
     const done = metrics().requests.startTimer({ method: endpoint.method, route: endpoint.path });
-    const response = await inTime(answer(endpoint, handle, request, context.params), request.method === 'GET').catch((error: unknown) => problemOf(error, { method: request.method, path: request.nextUrl.pathname }));
+    const response = await inTime(answer(endpoint, handle, request, context.params), request.method === 'GET', endpoint.deadlineMs).catch((error: unknown) => problemOf(error, { method: request.method, path: request.nextUrl.pathname }));
     done({ status: response.status });
     return response;
   };
@@ -137,10 +137,10 @@ export function fieldErrors(error: z.ZodError): FieldErrors {
 }
 
 /** Answers "not now" where the database stalls. `reads`: nothing was to be changed. */
-export async function inTime(work: Promise<Response>, reads = false): Promise<Response> {
+export async function inTime(work: Promise<Response>, reads = false, deadlineMs = DEADLINE_MS): Promise<Response> {
   let timer: NodeJS.Timeout | undefined;
   const late = new Promise<never>((_, reject) => {
-    timer = setTimeout(() => reject(new UnavailableError(reads ? 'It could not be read just now; trying again.' : 'The database takes too long right now. Look whether the change was kept before you try again.')), DEADLINE_MS);
+    timer = setTimeout(() => reject(new UnavailableError(reads ? 'It could not be read just now; trying again.' : 'The database takes too long right now. Look whether the change was kept before you try again.')), deadlineMs);
   });
   try {
     return await Promise.race([work, late]);

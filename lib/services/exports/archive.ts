@@ -1,15 +1,17 @@
 import { Op } from 'sequelize';
 import { Batch, Cellar, Entry } from '@/db/models';
-import { floatStays, readingsOfStay, type ArchiveReading, type FloatStay } from '@/db/queries/archive';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
-import { READING_COLUMNS } from '@/lib/contracts/archive';
 import { loadBatch } from '../batches/load';
 import { namesOf } from '../entries/names';
 import { iso, isoOrNull } from '../iso';
+import { partPieces } from './parts';
+import { photosPieces } from './photos';
+import { sensorsPieces } from './sensors';
 
 const setupOf = (batch: Batch) => ({
+  id: batch.id,
   name: batch.name,
   kind: batch.kind,
   drink_colour: batch.drinkColour,
@@ -21,6 +23,8 @@ const setupOf = (batch: Batch) => ({
   neck: batch.neck,
   pitched_at: isoOrNull(batch.pitchedAt),
   original_gravity: batch.originalGravity,
+  must_version: batch.mustVersionId,
+  must_share: batch.mustShare,
   yeast: batch.yeast,
   attenuation_min_percent: batch.attenuationMinPercent,
   attenuation_max_percent: batch.attenuationMaxPercent,
@@ -33,9 +37,10 @@ const setupOf = (batch: Batch) => ({
 });
 
 async function entriesOf(batch: Batch) {
-  const rows = await Entry.findAll({ where: { batchId: batch.id, removedAt: { [Op.is]: null } }, order: [['at', 'ASC'], ['createdAt', 'ASC'], ['kind', 'ASC']] });
+  const rows = await Entry.findAll({ where: { batchId: batch.id, removedAt: { [Op.is]: null } }, order: [['at', 'ASC'], ['createdAt', 'ASC'], ['kind', 'ASC'], ['id', 'ASC']] });
   const names = await namesOf(rows.map((row) => row.personId));
   return rows.map((row) => ({
+    id: row.id,
     kind: row.kind,
     at: iso(row.at),
     text: row.text,
@@ -54,31 +59,14 @@ async function entriesOf(batch: Batch) {
   }));
 }
 
-export const rowOf = (r: ArchiveReading) => [r.measuredAt, r.receivedAt, r.gravity, r.gravitySent, r.inclination, r.temperature, r.battery, r.signal, r.foam, r.sequence];
-
-async function* floatPieces(stay: FloatStay, now: number): AsyncGenerator<string> {
-  const to = stay.to ?? new Date(now);
-  yield `{"name":${JSON.stringify(stay.name)},"from":"${iso(stay.from)}","to":"${iso(to)}","columns":${JSON.stringify(READING_COLUMNS)},"readings":[`;
-  let first = true;
-  for await (const page of readingsOfStay({ ...stay, to })) {
-    yield (first ? '' : ',') + page.map((reading) => JSON.stringify(rowOf(reading))).join(',\n');
-    first = false;
-  }
-  yield ']}';
-}
-
-async function* pieces(cellar: Cellar, batches: readonly Batch[], now: number): AsyncGenerator<string> {
+async function* pieces(cellar: Cellar, batches: readonly Batch[], batchId: string | null, now: number): AsyncGenerator<string> {
   yield `{"format":"fallbright-archive","version":1,"exported_at":"${iso(now)}","cellar":${JSON.stringify({ name: cellar.name, time_zone: cellar.timeZone })},"batches":[`;
-  for (const [index, batch] of batches.entries()) {
-    const whole = JSON.stringify({ ...setupOf(batch), entries: await entriesOf(batch) });
-    yield `${index === 0 ? '' : ','}\n${whole.slice(0, -1)},"floats":[`;
-    for (const [place, stay] of (await floatStays(batch.id)).entries()) {
-      if (place > 0) yield ',';
-      yield* floatPieces(stay, now);
-    }
-    yield ']}';
-  }
-  yield ']}\n';
+  for (const [index, batch] of batches.entries()) yield `${index === 0 ? '' : ','}\n${JSON.stringify({ ...setupOf(batch), entries: await entriesOf(batch) })}`;
+  yield ']';
+  yield* partPieces(cellar.id, batchId);
+  yield* sensorsPieces(cellar.id, batchId, now);
+  yield* photosPieces(cellar.id, batchId);
+  yield '}\n';
 }
 
 /** Batches to take out: one, or all of the cellar. */
@@ -92,5 +80,5 @@ export async function batchesToExport(actor: Actor, batchId: string | null): Pro
 export async function exportArchive(actor: Actor, batchId: string | null, clock: Clock = systemClock): Promise<AsyncGenerator<string>> {
   const batches = await batchesToExport(actor, batchId);
   const cellar = await Cellar.findByPk(actor.cellarId, { rejectOnEmpty: true });
-  return pieces(cellar, batches, clock.now());
+  return pieces(cellar, batches, batchId, clock.now());
 }

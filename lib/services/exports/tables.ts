@@ -8,7 +8,8 @@ import { READING_COLUMNS } from '@/lib/contracts/archive';
 import { defuse } from '@/lib/core/importing/cells';
 import { namesOf } from '../entries/names';
 import { iso } from '../iso';
-import { batchesToExport, rowOf } from './archive';
+import { batchesToExport } from './archive';
+import { rowOf } from './sensors';
 
 export const EXPORTED_TABLES = ['readings', 'log', 'batches'] as const;
 export type ExportedTable = (typeof EXPORTED_TABLES)[number];

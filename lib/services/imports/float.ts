@@ -8,13 +8,22 @@ import { InvalidError } from '@/lib/errors';
 
 const AT_ONCE = 5_000;
 
-/** A float that speaks to nobody: it carries what a file brought into a batch, so that it can be taken out again whole. */
-export async function importedFloat(batch: { id: string; cellarId: string }, float: { name: string; from: Date; to: Date }, rows: readonly ArchiveReading[], transaction: Transaction): Promise<{ sensorId: number; stored: number }> {
-  const sensor = await Sensor.create({ cellarId: batch.cellarId, identifier: makeSensorIdentifier(), secretHash: hashSensorSecret(makeSensorSecret()), name: float.name, kind: 'file' }, { transaction });
-  if (float.to > float.from) await Assignment.create({ cellarId: batch.cellarId, sensorId: sensor.id, batchId: batch.id, fromAt: float.from, toAt: float.to }, { transaction });
+/** A sensor that speaks to nobody: it carries what a file brought, so that it can be taken out again whole. */
+export const silentSensor = ({ cellarId, name, createdAt }: { cellarId: string; name: string; createdAt?: Date }, transaction: Transaction): Promise<Sensor> =>
+  Sensor.create({ cellarId, identifier: makeSensorIdentifier(), secretHash: hashSensorSecret(makeSensorSecret()), name, kind: 'file', ...(createdAt && { createdAt }) }, { transaction });
+
+/** Returns how many were new. */
+export async function keepRows(sensorId: number, rows: readonly ArchiveReading[], transaction: Transaction): Promise<number> {
   let stored = 0;
-  for (let from = 0; from < rows.length; from += AT_ONCE) stored += await insertImported(sensor.id, rows.slice(from, from + AT_ONCE), transaction);
-  return { sensorId: sensor.id, stored };
+  for (let from = 0; from < rows.length; from += AT_ONCE) stored += await insertImported(sensorId, rows.slice(from, from + AT_ONCE), transaction);
+  return stored;
+}
+
+/** What a log file brought, in its batch. */
+export async function importedFloat(batch: { id: string; cellarId: string }, float: { name: string; from: Date; to: Date }, rows: readonly ArchiveReading[], transaction: Transaction): Promise<{ sensorId: number; stored: number }> {
+  const sensor = await silentSensor({ cellarId: batch.cellarId, name: float.name }, transaction);
+  await Assignment.create({ cellarId: batch.cellarId, sensorId: sensor.id, batchId: batch.id, fromAt: float.from, toAt: float.to }, { transaction });
+  return { sensorId: sensor.id, stored: await keepRows(sensor.id, rows, transaction) };
 }
 
 /** No reading is older than this; what claims to be would make tables for months that never were. */

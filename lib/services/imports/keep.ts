@@ -1,12 +1,11 @@
 import { randomUUID } from 'node:crypto';
 import type { Transaction } from 'sequelize';
 import { inTransaction } from '@/db/client';
-import { Batch, Cellar, Entry, ImportRun, Membership, Person } from '@/db/models';
+import { Batch, Cellar, Entry, ImportRun } from '@/db/models';
 import type { ArchiveReading } from '@/db/queries/archive';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
-import type { ArchivedBatch } from '@/lib/contracts/archive';
 import type { ImportBody, ImportForm } from '@/lib/contracts/imports';
 import type { ImportedBatch } from '@/lib/core/importing/batches';
 import type { ImportedReading } from '@/lib/core/importing/readings';
@@ -14,8 +13,12 @@ import { InvalidError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { loadBatch } from '../batches/load';
 import { notifyChange } from '../changes';
+import { bringArchive, peopleByName } from './archive';
 import { ensureMonths, importedFloat } from './float';
+import { NewIds } from './ids';
 import { loadImport } from './list';
+import { makeIds, refuseFile } from './parts';
+import { storePhotos } from './photos';
 import { readArchive, readBatches, readReadings } from './read';
 
 const nothing = () => new InvalidError('Nothing of the file can be kept.', { text: ['holds no row that can be kept'] });
@@ -32,6 +35,7 @@ const asRow = (now: number) => ({ at, gravity, temperature, battery, signal }: I
   signal,
   foam: null,
   sequence: null,
+  calibration: null,
 });
 
 async function keepReadings(actor: Actor, form: Extract<ImportForm, { kind: 'readings' }>, timeZone: string, now: number, transaction: Transaction) {
@@ -74,73 +78,12 @@ async function keepBatch(actor: Actor, importId: string, batch: ImportedBatch, t
   return row.id;
 }
 
-const date = (at: string | null) => (at === null ? null : new Date(at));
-
-/** People of this cellar by their name: the log keeps its authors where they are here too. */
-async function peopleByName(cellarId: string, transaction: Transaction): Promise<Map<string, string>> {
-  const members = await Membership.findAll({ where: { cellarId }, transaction });
-  const people = await Person.findAll({ where: { id: members.map((member) => member.personId) }, transaction });
-  return new Map(people.map((person) => [person.name, person.id]));
-}
-
-async function keepArchived(actor: Actor, importId: string, batch: ArchivedBatch, people: ReadonlyMap<string, string>, transaction: Transaction): Promise<{ id: string; entries: number; readings: number }> {
-  const row = await Batch.create(
-    {
-      cellarId: actor.cellarId,
-      importId,
-      name: batch.name,
-      kind: batch.kind,
-      drinkColour: batch.drink_colour,
-      vesselKind: batch.vessel_kind,
-      tag: batch.tag,
-      place: batch.place,
-      volumeL: batch.volume_l,
-      vesselL: batch.vessel_l,
-      neck: batch.neck,
-      pitchedAt: date(batch.pitched_at),
-      originalGravity: batch.original_gravity,
-      yeast: batch.yeast,
-      attenuationMinPercent: batch.attenuation_min_percent,
-      attenuationMaxPercent: batch.attenuation_max_percent,
-      alcoholToleranceAbv: batch.alcohol_tolerance_abv,
-      temperatureMinC: batch.temperature_min_c,
-      temperatureMaxC: batch.temperature_max_c,
-      state: batch.state,
-      endedAt: date(batch.ended_at),
-      createdBy: actor.personId,
-      createdAt: new Date(batch.created_at),
-    },
-    { transaction },
-  );
-  await Entry.bulkCreate(
-    batch.entries.map((entry) => ({
-      id: randomUUID(),
-      cellarId: actor.cellarId,
-      batchId: row.id,
-      kind: entry.kind,
-      at: new Date(entry.at),
-      text: entry.text,
-      gravity: entry.gravity,
-      gravityRead: entry.gravity_read,
-      temperatureC: entry.temperature_c,
-      calibratedAtC: entry.calibrated_at_c,
-      neck: entry.neck,
-      volumeL: entry.volume_l,
-      sugarG: entry.sugar_g,
-      fruitG: entry.fruit_g,
-      detail: entry.detail,
-      personId: (entry.by !== null && people.get(entry.by)) || null,
-      createdAt: new Date(entry.created_at),
-      revisedAt: date(entry.revised_at),
-    })),
-    { transaction },
-  );
-  let readings = 0;
-  for (const float of batch.floats) {
-    const rows = float.readings.map(([measuredAt, receivedAt, gravity, gravitySent, inclination, temperature, battery, signal, foam, sequence]) => ({ measuredAt, receivedAt, gravity, gravitySent, inclination, temperature, battery, signal, foam, sequence }));
-    readings += (await importedFloat(row, { name: float.name, from: new Date(float.from), to: new Date(float.to) }, rows, transaction)).stored;
-  }
-  return { id: row.id, entries: batch.entries.length, readings };
+/** One archive unfolds in memory at a time. */
+let bringing: Promise<unknown> = Promise.resolve();
+function alone<T>(work: () => Promise<T>): Promise<T> {
+  const done = bringing.then(work, work);
+  bringing = done.catch(() => undefined);
+  return done;
 }
 
 /** Keeps a file that a person has looked at: all of it in one step, which one step undoes. */
@@ -148,12 +91,8 @@ export async function keepImport(actor: Actor, form: ImportForm, clock: Clock = 
   authorize(actor, 'data.import');
   const now = clock.now();
   const { timeZone } = await Cellar.findByPk(actor.cellarId, { rejectOnEmpty: true });
-  const archive = form.kind === 'archive' ? readArchive(form) : null;
-  if (archive) {
-    if (archive.batches.length === 0) throw nothing();
-    for (const batch of archive.batches) for (const float of batch.floats) await ensureMonths(float.readings.map(([measuredAt]) => measuredAt), now);
-  }
   const id = randomUUID();
+  if (form.kind === 'archive') return alone(() => keepArchive(actor, id, form, now));
   return inTransaction(async (transaction) => {
     const run = await ImportRun.create({ id, cellarId: actor.cellarId, kind: form.kind, fileName: form.file_name, counts: {}, createdBy: actor.personId, createdAt: new Date(now) }, { transaction });
     let counts: Record<string, number>;
@@ -163,23 +102,41 @@ export async function keepImport(actor: Actor, form: ImportForm, clock: Clock = 
       const kept = await keepReadings(actor, form, timeZone, now, transaction);
       ({ counts, touched } = kept);
       into = { sensorId: kept.sensorId, batchId: kept.batchId };
-    } else if (archive) {
-      const people = await peopleByName(actor.cellarId, transaction);
-      counts = { batches: 0, entries: 0, readings: 0 };
-      for (const batch of archive.batches) {
-        const kept = await keepArchived(actor, id, batch, people, transaction);
-        counts = { batches: counts.batches! + 1, entries: counts.entries! + kept.entries, readings: counts.readings! + kept.readings };
-        touched.push(kept.id);
-      }
     } else {
-      const { good, errors } = readBatches(form as Extract<ImportForm, { kind: 'batches' }>, timeZone, now);
+      const { good, errors } = readBatches(form, timeZone, now);
       if (good.length === 0) throw nothing();
       for (const { value } of good) touched.push(await keepBatch(actor, id, value, transaction));
       counts = { batches: good.length, refused: errors.length };
     }
     await run.update({ counts, ...into }, { transaction });
-    await auditBy(actor, 'import.kept', id, { kind: form.kind, file: form.file_name, ...counts }, transaction);
-    for (const batch of touched) await notifyChange({ cellar: actor.cellarId, kind: 'batch', batch }, transaction);
-    return loadImport(actor, id, transaction);
+    return finish(actor, run, touched, transaction);
   });
+}
+
+async function finish(actor: Actor, run: ImportRun, touched: readonly string[], transaction: Transaction): Promise<ImportBody> {
+  await auditBy(actor, 'import.kept', run.id, { kind: run.kind, file: run.fileName, ...run.counts }, transaction);
+  for (const batch of touched) await notifyChange({ cellar: actor.cellarId, kind: 'batch', batch }, transaction);
+  return loadImport(actor, run.id, transaction);
+}
+
+async function keepArchive(actor: Actor, id: string, form: Extract<ImportForm, { kind: 'archive' }>, now: number): Promise<ImportBody> {
+  const archive = readArchive(form);
+  const { cellarId } = actor;
+  for (const sensor of archive.sensors) await ensureMonths(sensor.readings.map(([measuredAt]) => measuredAt), now);
+  const ids = new NewIds(now);
+  makeIds(archive, ids);
+  const stored = await storePhotos(cellarId, archive.photos, ids);
+  try {
+    return await inTransaction(async (transaction) => {
+      const run = await ImportRun.create({ id, cellarId, kind: 'archive', fileName: form.file_name, counts: {}, createdBy: actor.personId, createdAt: new Date(now) }, { transaction });
+      const people = await peopleByName({ cellarId, transaction });
+      const { counts, touched, made } = await bringArchive(archive, stored, { personId: actor.personId, importId: id }, { cellarId, ids, people, transaction });
+      await run.update({ counts, made }, { transaction });
+      return finish(actor, run, touched, transaction);
+    });
+  } catch (error) {
+    // What the tables do not take (classes 22 and 23 of SQLSTATE) contradicts itself in the file.
+    const code = (error as { original?: { code?: unknown } }).original?.code;
+    throw typeof code === 'string' && /^2[23]/.test(code) ? refuseFile('holds parts that contradict each other') : error;
+  }
 }

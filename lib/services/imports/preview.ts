@@ -6,6 +6,7 @@ import type { ImportPreviewBody, ImportPreviewForm } from '@/lib/contracts/impor
 import type { ImportedBatch } from '@/lib/core/importing/batches';
 import type { ImportedReading } from '@/lib/core/importing/readings';
 import { iso } from '../iso';
+import { previewArchive } from './preview-archive';
 import { readArchive, readBatches, readReadings } from './read';
 
 const ROWS_SHOWN = 8;
@@ -20,26 +21,7 @@ const batchWords = (batch: ImportedBatch) => `${batch.name}, ${batch.kind}, ${da
 export async function previewImport(actor: Actor, form: ImportPreviewForm, clock: Clock = systemClock): Promise<ImportPreviewBody> {
   authorize(actor, 'data.import');
   const { timeZone } = await Cellar.findByPk(actor.cellarId, { rejectOnEmpty: true });
-  if (form.kind === 'archive') {
-    const { batches } = readArchive(form);
-    const times = batches.flatMap((batch) => (batch.pitched_at ? [Date.parse(batch.pitched_at)] : []));
-    return {
-      kind: 'archive',
-      header: [],
-      rows: [],
-      columns: {},
-      gravity_unit: null,
-      temperature_unit: null,
-      time_zone: timeZone,
-      date_order: 'day',
-      read: batches.slice(0, ROWS_SHOWN).map((batch, index) => ({ line: index + 1, says: `${batch.name}, ${batch.entries.length} lines of log, ${batch.floats.reduce((sum, float) => sum + float.readings.length, 0)} readings` })),
-      good: batches.length,
-      bad: 0,
-      errors: [],
-      from: times.length ? iso(Math.min(...times)) : null,
-      to: times.length ? iso(Math.max(...times)) : null,
-    };
-  }
+  if (form.kind === 'archive') return previewArchive(actor, readArchive(form), timeZone);
   const file = form.kind === 'readings' ? readReadings(form, timeZone, clock.now()) : readBatches(form, timeZone, clock.now());
   const { table, good, errors } = file;
   const times = form.kind === 'readings' ? good.map(({ value }) => (value as ImportedReading).at) : good.flatMap(({ value }) => (value as ImportedBatch).pitchedAt ?? []);
@@ -57,6 +39,7 @@ export async function previewImport(actor: Actor, form: ImportPreviewForm, clock
     good: good.length,
     bad: errors.length,
     errors: errors.slice(0, ERRORS_SHOWN),
+    notes: [],
     from: span && iso(span.low),
     to: span && iso(span.high),
   };

@@ -4,6 +4,7 @@ import { batchIn, guessBatches, type BatchOptions, type ImportedBatch } from '@/
 import { guessReadings, readingIn, type ImportedReading, type LineError, type ReadingOptions } from '@/lib/core/importing/readings';
 import { isTimeZone } from '@/lib/core/importing/times';
 import { InvalidError } from '@/lib/errors';
+import { checkNames } from './archive';
 import { readTable, type Table } from './table';
 
 /** Rows that the guess goes by. */
@@ -58,6 +59,8 @@ export function readBatches(file: BatchesFile, timeZone: string, now: number): R
 /** @throws InvalidError with what is wrong and where, first come. */
 export function readArchive(file: Extract<ImportPreviewForm, { kind: 'archive' }>): Archive {
   let value: unknown;
+  // PostgreSQL keeps neither; what stands for them in JSON is found before they are.
+  if (file.text.includes('\\u0000')) throw new InvalidError('The file cannot be read.', { text: ['holds zero bytes'] });
   try {
     value = JSON.parse(file.text);
   } catch {
@@ -68,5 +71,6 @@ export function readArchive(file: Extract<ImportPreviewForm, { kind: 'archive' }
     const [issue] = parsed.error.issues;
     throw new InvalidError('The file cannot be read.', { text: [`${issue?.path.join('.') || 'the file'} ${issue?.message ?? 'is wrong'}`.slice(0, 300)] });
   }
+  checkNames(parsed.data);
   return parsed.data;
 }

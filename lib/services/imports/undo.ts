@@ -2,6 +2,7 @@ import { Op } from 'sequelize';
 import { inTransaction } from '@/db/client';
 import { Assignment, Batch, ImportRun, Lot, Sensor } from '@/db/models';
 import { deleteImported } from '@/db/queries/archive';
+import { deleteUnused } from '@/db/queries/imports';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
@@ -9,6 +10,7 @@ import type { ImportBody } from '@/lib/contracts/imports';
 import { ConflictError, NotFoundError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { notifyChange } from '../changes';
+import type { Made } from './archive';
 import { loadImport } from './list';
 
 /** Takes an import out again, all of it in one step. Batches that were bottled since then are no longer the file's alone. */
@@ -20,12 +22,15 @@ export async function undoImport(actor: Actor, id: string, clock: Clock = system
     if (run.undoneAt) throw new ConflictError('This import was taken out already.');
     const batches = await Batch.findAll({ attributes: ['id'], where: { importId: id }, transaction });
     const ids = batches.map((batch) => batch.id);
-    if (ids.length > 0 && (await Lot.count({ where: { batchId: ids }, transaction })) > 0) throw new ConflictError('Some of these batches were bottled since. Take those bottles out of the book first.');
+    if (ids.length > 0 && (await Lot.count({ where: { batchId: ids, createdAt: { [Op.gt]: run.createdAt } }, transaction })) > 0) throw new ConflictError('Some of these batches were bottled since. Take those bottles out of the book first.');
     const stays = ids.length > 0 ? await Assignment.findAll({ attributes: ['sensorId'], where: { batchId: ids }, transaction }) : [];
-    const floats = await Sensor.findAll({ attributes: ['id'], where: { kind: 'file', id: { [Op.in]: [...stays.map((stay) => stay.sensorId), ...(run.sensorId === null ? [] : [run.sensorId])] } }, transaction });
+    const made = { tables: {}, sensors: [], ...(run.made as Partial<Made>) };
+    const sensors = [...stays.map((stay) => stay.sensorId), ...made.sensors, ...(run.sensorId === null ? [] : [run.sensorId])];
+    const floats = await Sensor.findAll({ attributes: ['id'], where: { kind: 'file', cellarId: actor.cellarId, id: { [Op.in]: sensors } }, transaction });
     for (const float of floats) await deleteImported(float.id, transaction);
     await run.update({ undoneAt: new Date(clock.now()), undoneBy: actor.personId }, { transaction });
     await Batch.destroy({ where: { id: ids }, transaction });
+    await deleteUnused(made.tables, transaction);
     await Sensor.destroy({ where: { id: floats.map((float) => float.id) }, transaction });
     await auditBy(actor, 'import.undone', id, { ...run.counts }, transaction);
     for (const batch of new Set([...ids, ...(run.batchId === null ? [] : [run.batchId])])) await notifyChange({ cellar: actor.cellarId, kind: 'batch', batch }, transaction);

@@ -1,6 +1,7 @@
 import { fileTypeFromBuffer } from 'file-type';
 import sharp from 'sharp';
 import { InvalidError, UnavailableError } from '@/lib/errors';
+import { isPlainJpeg } from './plain-jpeg';
 
 /** Forms that are taken, by their content and not by what they are called. */
 const TAKEN: ReadonlySet<string> = new Set(['image/jpeg', 'image/png', 'image/webp', 'image/avif']);
@@ -65,4 +66,12 @@ export async function developPicture(bytes: Buffer): Promise<Picture> {
       throw refuse(says);
     }
   });
+}
+
+/** A photo that was written anew before, from an archive: as it is where it is a plain JPEG of our size, else as {@link developPicture} does. */
+export async function developAgain(bytes: Buffer): Promise<Picture> {
+  const anew = await developPicture(bytes);
+  if (!isPlainJpeg(bytes)) return anew;
+  const { width = 0, height = 0 } = await sharp(bytes).metadata();
+  return width === anew.width && height === anew.height ? { ...anew, large: bytes } : anew;
 }
