@@ -209,6 +209,23 @@ describe('the word that something changed', () => {
     expect(heard).toEqual(Array.from({ length: 2 }, () => ({ cellar: sensor.cellarId, kind: 'reading', batch: batch.id })));
   });
 
+  it('is never said before the reading can be seen', async () => {
+    const sensor = identityOf((await buildSensor({ batch: await buildBatch() })).sensor);
+    const announcer = new Announcer();
+    await recordMessages([message(sensor, good)], announcer);
+    await until('the first word', () => heard.length === 1);
+    const stall = await db.sequelize.transaction();
+    await db.sequelize.query('lock table sensor_latest in exclusive mode', { transaction: stall });
+    const late = recordMessages([message(sensor, { ...good, at: '2026-03-04T05:50:00Z' })], announcer);
+    await until('the wait', async () => (await select(`select 1 from pg_locks l join pg_stat_activity a on a.pid = l.pid where not l.granted and a.datname = current_database()`)).length > 0);
+    await announcer.flush(NOW + 500);
+    expect(heard).toHaveLength(1);
+    await stall.commit();
+    await late;
+    await announcer.flush(NOW + 1_000);
+    await until('the second word', () => heard.length === 2);
+  });
+
   it('goes to the cellar where the sensor is in no batch', async () => {
     const sensor = await newSensor();
     await recordMessages([message(sensor, good)]);

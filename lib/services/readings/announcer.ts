@@ -12,16 +12,18 @@ export class Announcer {
   private readonly toldAt = new Map<number, number>();
   private owed = new Map<number, Span>();
 
-  /** Of the sensors in these rows, those to announce with the insert; the others are owed. */
+  /** Of the sensors in these rows, those to announce with the insert. */
   due(rows: readonly ReadingRow[], now: number): number[] {
-    const tell = new Set<number>();
+    const quiet = (sensorId: number) => now - (this.toldAt.get(sensorId) ?? -Infinity) >= AT_MOST_EVERY_MS && !this.owed.has(sensorId);
+    return [...new Set(rows.map((row) => row.sensorId))].filter(quiet);
+  }
+
+  /** The rows are committed, with the word of those told: the others are owed theirs. Sooner it would be said before there is anything to see. */
+  stored(rows: readonly ReadingRow[], told: readonly number[], now: number): void {
+    const said = new Set(told);
+    for (const sensorId of said) this.toldAt.set(sensorId, now);
     for (const { sensorId, reading: { measuredAt } } of rows) {
-      if (tell.has(sensorId)) continue;
-      if (now - (this.toldAt.get(sensorId) ?? -Infinity) >= AT_MOST_EVERY_MS && !this.owed.has(sensorId)) {
-        tell.add(sensorId);
-        this.toldAt.set(sensorId, now);
-        continue;
-      }
+      if (said.has(sensorId)) continue;
       const span = this.owed.get(sensorId);
       if (!span) this.owed.set(sensorId, { sensorId, first: measuredAt, last: measuredAt });
       else {
@@ -29,7 +31,6 @@ export class Announcer {
         span.last = Math.max(span.last, measuredAt);
       }
     }
-    return [...tell];
   }
 
   /** Announces what is owed. Where that fails it stays owed. */

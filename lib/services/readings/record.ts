@@ -110,7 +110,9 @@ async function write(readings: ReadingRow[], refusals: RefusalRow[], messages: r
       for (const month of unseen) monthsSeen.add(month);
     }
     try {
-      return await recordReadings(sequelize, readings, refusals, tell);
+      const stored = await recordReadings(sequelize, readings, refusals, tell);
+      announcer?.stored(readings, tell, now);
+      return stored;
     } catch (error) {
       if (attempt > 0 || !isMissingPartition(error)) throw error;
       monthsSeen.clear();
