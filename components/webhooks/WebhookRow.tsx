@@ -17,12 +17,17 @@ const STATES: Record<DeliveryBody['state'], { state: 'Done' | 'In hand' | 'Check
   failed: { state: 'Check', word: 'Given up' },
 };
 
-function Deliveries({ id }: { id: string }) {
+/** A time as the cellar's clock has it. */
+function useAt(): (time: string) => string {
   const { me } = useMe();
   const now = (useNow() ?? 0) / 1000;
+  return (time) => when(Date.parse(time) / 1000, now, me?.cellar.time_zone ?? 'UTC');
+}
+
+function Deliveries({ id }: { id: string }) {
   const { deliveries } = useDeliveries(id);
   const { busy, run } = useWork();
-  const at = (time: string) => when(Date.parse(time) / 1000, now, me?.cellar.time_zone ?? 'UTC');
+  const at = useAt();
   if (!deliveries) return null;
   if (deliveries.length === 0) return <p className="type-reason py-2 text-ink2">Nothing was owed yet.</p>;
   return (
@@ -56,6 +61,7 @@ export function WebhookRow({ webhook }: { webhook: WebhookBody }) {
   const [open, setOpen] = useState(false);
   const [sure, setSure] = useState(false);
   const { busy, failed, run } = useWork();
+  const at = useAt();
   return (
     <li className="border-b px-(--margin) py-3">
       {failed && <FormError>{failed}</FormError>}
@@ -64,8 +70,13 @@ export function WebhookRow({ webhook }: { webhook: WebhookBody }) {
           <span className="block break-all font-mono text-[0.8125rem] font-semibold">{webhook.url}</span>
           <span className="type-label text-ink2">{webhook.events.join(', ')}</span>
         </span>
-        {webhook.disabled ? <State state="Leave be" word="Switched off" /> : webhook.last && <State {...STATES[webhook.last.state]} />}
+        {webhook.given_up_at ? <State state="Check" word="Given up" /> : webhook.disabled ? <State state="Leave be" word="Switched off" /> : webhook.last && <State {...STATES[webhook.last.state]} />}
       </div>
+      {webhook.failing_since && (
+        <p className="type-reason pt-1 text-ink2">
+          {webhook.given_up_at ? `Switched off by the house ${at(webhook.given_up_at)}: nothing arrived since ${at(webhook.failing_since)}. The keepers were told.` : `Nothing arrives since ${at(webhook.failing_since)}. After five days it is switched off.`}
+        </p>
+      )}
       <div className="flex flex-wrap gap-2 pt-2">
         <Button size="lane" aria-expanded={open} onClick={() => setOpen(!open)}>
           {open ? 'Put the log away' : 'Log'}

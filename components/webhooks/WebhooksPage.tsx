@@ -15,7 +15,7 @@ import { WebhookRow } from './WebhookRow';
 
 export const EVENT_WORDS: Record<WebhookEvent, string> = {
   alert: 'an alert opens, is taken or ends',
-  assessment: 'the judgement of a batch changes',
+  assessment: 'a call of a batch changes',
   entry: 'something is logged',
   batch: 'a batch is begun, changed or ended',
   sensor: 'a sensor is moved or changed',
@@ -74,7 +74,7 @@ export function WebhooksPage() {
           </div>
         </div>
       )}
-      <GroupBar word="Webhooks" note="tried again for a day, then given up" />
+      <GroupBar word="Webhooks" note="tried again for a day; switched off after five days without any" />
       {loading && <Haze height={60} label="Loading the webhooks" className="mx-(--margin) my-3" />}
       {error && !webhooks && (
         <ErrorState title="The webhooks did not load" onRetry={retry}>

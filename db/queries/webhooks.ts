@@ -60,6 +60,16 @@ export async function settleDelivery({ id, payload, status, error, againInMs }: 
   );
 }
 
+/** Since when none arrives; from now on where the last one did. Null: it is gone. */
+export async function failedSince(webhookId: string, now: Date): Promise<Date | null> {
+  const [row] = await database().query<{ since: Date }>(`update webhooks set failing_since = coalesce(failing_since, $now) where id = $webhookId returning failing_since as since`, { bind: { webhookId, now }, type: QueryTypes.SELECT });
+  return row?.since ?? null;
+}
+
+export async function arrivedAt(webhookId: string): Promise<void> {
+  await database().query(`update webhooks set failing_since = null where id = $webhookId and failing_since is not null`, { bind: { webhookId } });
+}
+
 export async function forgetDeliveries(days: number): Promise<void> {
   await database().query(`delete from webhook_deliveries where created_at < now() - $days * interval '1 day'`, { bind: { days } });
 }

@@ -26,6 +26,10 @@ export const webhookSchema = z.object({
   events: z.array(z.string()),
   note: z.string().nullable(),
   disabled: z.boolean(),
+  /** Since when no delivery arrives; null where the last one did. */
+  failing_since: z.string().nullable(),
+  /** When the house switched it off, because none arrived for days. */
+  given_up_at: z.string().nullable(),
   created_at: z.string(),
   last: z.object({ at: z.string(), state: z.enum(['waiting', 'delivered', 'failed']), status: z.number().int().nullable() }).nullable(),
 });

@@ -28,7 +28,7 @@ const linkLetter = z.object({
 /** Something about the account has changed: whoever did not do it should know. */
 const noticeLetter = z.object({
   template: z.literal('notice'),
-  what: z.enum(['password-changed', 'second-factor-on', 'second-factor-off', 'recovery-code-used', 'mail-changed', 'account-deleted', 'removed', 'handed-over']),
+  what: z.enum(['password-changed', 'second-factor-on', 'second-factor-off', 'recovery-code-used', 'mail-changed', 'account-deleted', 'removed', 'handed-over', 'webhook-given-up']),
   at: z.string(),
   time_zone: z.string(),
   /** The cellar or the address it is about. */

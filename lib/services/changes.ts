@@ -4,9 +4,9 @@ import { listen, type Listener } from '@/db/listen';
 import { oweDeliveries } from '@/db/queries/webhooks';
 import { CHANGES_CHANNEL, changeSchema, EVERY_CELLAR, type Change } from '../contracts/events';
 
-/** Says that something changed, once `transaction` commits; with a rollback nothing is said. It carries no data. Webhooks that asked for it are owed a delivery with it. */
-export async function notifyChange(change: Change, transaction: Transaction): Promise<void> {
-  await oweDeliveries(change, transaction);
+/** Says that something changed, once `transaction` commits; with a rollback nothing is said. It carries no data. Webhooks that asked for it are owed a delivery with it, unless only our own pages have a use for it. */
+export async function notifyChange(change: Change, transaction: Transaction, { toWebhooks = true } = {}): Promise<void> {
+  if (toWebhooks) await oweDeliveries(change, transaction);
   await announce(change, transaction);
 }
 

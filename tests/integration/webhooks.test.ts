@@ -1,18 +1,23 @@
+import { QueryTypes } from 'sequelize';
 import { createServer, type IncomingMessage, type Server } from 'node:http';
 import type { AddressInfo } from 'node:net';
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { inTransaction } from '@/db/client';
 import { Webhook, WebhookDelivery } from '@/db/models';
+import { batchState } from '@/db/queries/batch-states';
+import type { AssessmentBody } from '@/lib/contracts/assessment';
+import { ManualClock } from '@/lib/clock';
 import { forgetEnv } from '@/lib/config/env';
 import { createWebhook as createForm } from '@/lib/contracts/webhooks';
 import { PrivateAddressError, publicLookup } from '@/lib/push/public-address';
+import { assessBatch } from '@/lib/services/batches/assess';
 import { notifyChange } from '@/lib/services/changes';
 import { deliverDue } from '@/lib/services/webhooks/deliver';
 import { createWebhook, deliverAgain, listDeliveries, listWebhooks, removeWebhook, tryWebhook, updateWebhook } from '@/lib/services/webhooks/manage';
 import { post, refusedTarget } from '@/lib/services/webhooks/post';
 import { seal, sign, unseal, verify } from '@/lib/services/webhooks/signature';
 import { useDatabase } from '../support/database';
-import { buildBatch, buildMember } from '../support/factories';
+import { buildBatch, buildEntry, buildMember } from '../support/factories';
 
 const db = useDatabase();
 process.env.AUTH_SECRET ??= 'a secret of the tests, long enough to be one';
@@ -51,6 +56,7 @@ beforeEach(async () => {
 const form = (more: object = {}) => createForm.parse({ url: address, events: ['batch', 'alert'], ...more });
 const changed = (cellar: string, kind: 'batch' | 'alert' | 'entry', batch: string | null) => inTransaction((transaction) => notifyChange({ cellar, kind, batch }, transaction));
 const deliver = (more: object = {}) => deliverDue({ allowPrivate: true, ...more });
+const verdicts = async (batchId: string) => JSON.stringify(Object.values((await batchState<AssessmentBody>(batchId))!.assessment.calls).map((call) => [call.verdict, call.kind]));
 const due = () => db.sequelize.query('update webhook_deliveries set next_attempt_at = now()');
 
 describe('a webhook', () => {
@@ -124,6 +130,67 @@ describe('a webhook', () => {
     await deliverAgain(keeper, id, items[0]!.id);
     await deliver();
     expect((await listDeliveries(keeper, id)).items).toMatchObject([{ state: 'delivered' }]);
+  });
+
+  it('is switched off after days without any that arrived, and its keepers are told', async () => {
+    const keeper = await buildMember('keeper');
+    const hand = await buildMember('hand', { cellarId: keeper.cellarId });
+    const { id } = await createWebhook(keeper, form());
+    const state = async () => (await listWebhooks(keeper)).items[0]!;
+    const letters = async () => (await db.sequelize.query<{ person_id: string; payload: { about: string } }>(`select person_id, payload from letters where payload->>'what' = 'webhook-given-up' and cellar_id is null`, { type: QueryTypes.SELECT })).filter((row) => [keeper.personId, hand.personId].includes(row.person_id));
+    const tryToTheEnd = async (clock: ManualClock) => {
+      await WebhookDelivery.destroy({ where: {} });
+      await changed(keeper.cellarId, 'batch', null);
+      for (let attempt = 0; attempt < 8; attempt += 1) {
+        await due();
+        await deliver({ clock });
+      }
+      expect((await listDeliveries(keeper, id)).items).toMatchObject([{ state: 'failed' }]);
+    };
+    const start = Date.UTC(2026, 2, 1);
+    other.answer = 503;
+    await tryToTheEnd(new ManualClock(start));
+    expect(await state()).toMatchObject({ disabled: false, failing_since: new Date(start).toISOString(), given_up_at: null });
+    await tryToTheEnd(new ManualClock(start + 4 * 86_400_000));
+    expect(await state()).toMatchObject({ disabled: false });
+    await tryToTheEnd(new ManualClock(start + 6 * 86_400_000));
+    expect(await state()).toMatchObject({ disabled: true, given_up_at: new Date(start + 6 * 86_400_000).toISOString() });
+    expect(await letters()).toMatchObject([{ person_id: keeper.personId, payload: { about: new URL(address).host } }]);
+    await changed(keeper.cellarId, 'batch', null);
+    expect(await deliver()).toBe(0);
+    // On again, it begins anew; one that arrives ends the count.
+    await updateWebhook(keeper, id, { disabled: false });
+    expect(await state()).toMatchObject({ disabled: false, failing_since: null, given_up_at: null });
+    await changed(keeper.cellarId, 'batch', null);
+    await deliver({ clock: new ManualClock(start + 7 * 86_400_000) });
+    expect((await state()).failing_since).not.toBeNull();
+    other.answer = 200;
+    await due();
+    await deliver();
+    expect((await state()).failing_since).toBeNull();
+    expect(await letters()).toHaveLength(1);
+  });
+
+  it('hears of a judgement where a call changed, and not of each figure that moved', async () => {
+    const keeper = await buildMember('keeper');
+    const batch = await buildBatch({ cellarId: keeper.cellarId, pitchedAt: new Date(Date.now() - 3 * 86_400_000), originalGravity: 1.05 });
+    await createWebhook(keeper, form({ events: ['assessment'] }));
+    const read = (gravity: number, hoursAgo: number) => buildEntry(batch, { kind: 'reading', gravity, gravityRead: gravity, at: new Date(Date.now() - hoursAgo * 3_600_000) });
+    const heard = async () => {
+      await assessBatch(batch.id);
+      await deliver();
+      return other.heard.splice(0).map(({ body }) => JSON.parse(body) as { data: { calls: Record<string, { verdict: string }> } });
+    };
+    await read(1.05, 70);
+    expect(await heard()).toHaveLength(1);
+    const before = await verdicts(batch.id);
+    await read(1.0499, 69);
+    const after = await heard();
+    expect(after).toHaveLength((await verdicts(batch.id)) === before ? 0 : 1);
+    expect(await verdicts(batch.id)).toBe(before);
+    await read(1.03, 2);
+    expect(await heard()).toHaveLength(1);
+    expect(await verdicts(batch.id)).not.toBe(before);
   });
 
   it('does not hold others up while it is slow, and is not followed where it points elsewhere', async () => {

@@ -13,15 +13,20 @@ const SAYS: Record<NoticeLetter['what'], (about: string) => { title: string; mea
   'account-deleted': () => ({ title: 'Your account was deleted', means: 'What you logged stays in the cellars’ logs without your name.' }),
   removed: (about) => ({ title: `You no longer share the cellar ${about}`, means: 'A keeper has taken you out. Your tokens and calendar address for it have stopped.' }),
   'handed-over': (about) => ({ title: `You keep the cellar ${about} now`, means: 'Its keeper has handed it over to you: people, sensors and settings are yours to run.' }),
+  'webhook-given-up': (about) => ({ title: `The webhook to ${about} was switched off`, means: 'Nothing arrived there for five days. What is owed from now on is not sent. Switch it on again once something listens.' }),
 };
 
-const HARMLESS: ReadonlySet<NoticeLetter['what']> = new Set(['removed', 'handed-over', 'account-deleted']);
+/** Where to do something about it. */
+const LEADS: Partial<Record<NoticeLetter['what'], { label: string; path: string }>> = { 'webhook-given-up': { label: 'Open the webhooks', path: '/settings/webhooks' } };
+
+const HARMLESS: ReadonlySet<NoticeLetter['what']> = new Set(['removed', 'handed-over', 'account-deleted', 'webhook-given-up']);
 
 /** Tells of a change to the account, at the address that would want to know. */
 export function notice({ what, at, time_zone, about }: NoticeLetter, { publicUrl }: LetterContext): Rendered {
   const { title, means } = SAYS[what](about ?? '');
+  const leads = LEADS[what];
   const help: Block[] = HARMLESS.has(what)
-    ? []
+    ? leads ? [{ type: 'link', label: leads.label, url: `${publicUrl}${leads.path}` }] : []
     : [
         { type: 'link', label: 'Look at your sign-ins', url: `${publicUrl}/settings/security` },
         { type: 'caution', text: 'If it was not you: choose a new passphrase at once (“Forgot it?” on the sign-in page). That ends every open sign-in.' },

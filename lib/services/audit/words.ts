@@ -74,6 +74,7 @@ const SAYS: Record<string, Says> = {
   'lot.given': (d) => `gave away ${text(d.count)} of a lot`,
   'tasting.written': () => 'wrote a tasting note',
   'tasting.removed': () => 'took a tasting note back',
+  'webhook.given-up': (d) => `the webhook to ${text(d.url)} was switched off: nothing arrived for days`,
   'rule.set': () => 'set a rule for alerts',
   'escalation.set': () => 'set who is told next',
   'account.exported': () => 'saved their data',

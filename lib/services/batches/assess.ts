@@ -74,7 +74,8 @@ async function keep(batch: Batch, { curve, expected, gas, footing, ...assessment
   const changed = changedCalls(before, assessment);
   if (changed.length) await keepAssessment({ cellarId, batchId, at, changed, assessment }, transaction);
   const same = before !== null && isDeepStrictEqual({ ...before, at: null }, { ...assessment, at: null });
-  if (!same) await notifyChange({ cellar: cellarId, kind: 'assessment', batch: batchId }, transaction);
+  // Figures move with every reading; another program hears when a call changes.
+  if (!same) await notifyChange({ cellar: cellarId, kind: 'assessment', batch: batchId }, transaction, { toWebhooks: changed.length > 0 });
 }
 
 function changedCalls(before: AssessmentBody | null, after: AssessmentBody): CallName[] {

@@ -1,6 +1,7 @@
 import { settleDelivery, takeDeliveries, type DueDelivery } from '@/db/queries/webhooks';
 import { systemClock, type Clock } from '@/lib/clock';
 import { composeDelivery } from './compose';
+import { noteArrival, noteFailure } from './give-up';
 import { post } from './post';
 import { sign, unseal } from './signature';
 
@@ -48,6 +49,7 @@ async function deliver(delivery: DueDelivery, allowPrivate: boolean, now: number
   }
   const againInMs = error === null ? null : (AGAIN_AFTER_MS[delivery.attempts - 1] ?? null);
   await settleDelivery({ id: delivery.id, payload, status, error, againInMs });
+  await (error === null ? noteArrival(delivery.webhookId) : noteFailure(delivery.webhookId, againInMs === null, now));
 }
 
 function sentence(error: unknown): string {

@@ -20,7 +20,7 @@ async function present(rows: readonly Webhook[], transaction?: Transaction): Pro
   const last = new Map((await lastDeliveries(rows.map((row) => row.id), transaction)).map((delivery) => [delivery.webhookId, delivery]));
   return rows.map((row) => {
     const delivery = last.get(row.id);
-    return { id: row.id, url: row.url, events: row.events, note: row.note, disabled: row.disabledAt !== null, created_at: iso(row.createdAt), last: delivery ? { at: iso(delivery.at), state: delivery.state, status: delivery.status } : null };
+    return { id: row.id, url: row.url, events: row.events, note: row.note, disabled: row.disabledAt !== null, failing_since: isoOrNull(row.failingSince), given_up_at: isoOrNull(row.givenUpAt), created_at: iso(row.createdAt), last: delivery ? { at: iso(delivery.at), state: delivery.state, status: delivery.status } : null };
   });
 }
 
@@ -64,7 +64,7 @@ export async function updateWebhook(actor: Actor, id: string, input: UpdateWebho
         ...(input.url !== undefined && { url: input.url }),
         ...(input.events !== undefined && { events: [...new Set(input.events)] }),
         ...(input.note !== undefined && { note: input.note }),
-        ...(input.disabled !== undefined && { disabledAt: input.disabled ? (row.disabledAt ?? new Date(clock.now())) : null }),
+        ...(input.disabled !== undefined && { disabledAt: input.disabled ? (row.disabledAt ?? new Date(clock.now())) : null, givenUpAt: null, ...(!input.disabled && { failingSince: null }) }),
       },
       { transaction },
     );
