@@ -39,7 +39,7 @@ function open(stock: Stock, title: string): { doc: Doc; measure: Measure; has: R
     const key = `${face} ${text}`;
     let width = widths.get(key);
     if (width === undefined) {
-      width = runsOf(text, face, has).reduce((sum, run) => sum + doc.font(run.font).fontSize(MEASURED_AT).widthOfString(run.text), 0) / MEASURED_AT;
+      width = runsOf(text, face, has).reduce((sum, run) => sum + doc.font(run.font).fontSize(MEASURED_AT * run.scale).widthOfString(run.text), 0) / MEASURED_AT;
       widths.set(key, width);
     }
     return width * size;
@@ -104,7 +104,7 @@ function drawLabel(doc: Doc, picture: LabelPicture, text: LabelText, stock: Stoc
 function write(doc: Doc, placed: Placed, has: ReadonlySet<string>, colour: string): void {
   let x = placed.x;
   for (const run of runsOf(placed.text, placed.face, has)) {
-    doc.font(run.font).fontSize(placed.size).fillColor(colour).text(run.text, x, placed.y, { lineBreak: false, baseline: 'alphabetic' });
+    doc.font(run.font).fontSize(placed.size * run.scale).fillColor(colour).text(run.text, x, placed.y, { lineBreak: false, baseline: 'alphabetic' });
     x += doc.widthOfString(run.text);
   }
 }

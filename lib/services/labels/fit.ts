@@ -29,6 +29,17 @@ const LEADING = 0.98;
 const STEP = 0.94;
 const SMALLEST = 1;
 
+/** A word in as few pieces as it takes, about equally long. Null where even a letter does not fit. */
+function breakWord(word: string, width: number, measure: (text: string) => number): string[] | null {
+  const letters = [...word];
+  for (let count = Math.ceil(measure(word) / width); count <= letters.length; count += 1) {
+    const long = Math.ceil(letters.length / count);
+    const pieces = Array.from({ length: Math.ceil(letters.length / long) }, (_, index) => letters.slice(index * long, (index + 1) * long).join(''));
+    if (pieces.every((piece) => measure(piece) <= width)) return pieces;
+  }
+  return null;
+}
+
 /** Breaks at words; a word that is too long by itself is broken where it has to be. Null where even a letter does not fit. */
 export function breakLines(text: string, width: number, measure: (text: string) => number, breakWords: boolean): string[] | null {
   const lines: string[] = [];
@@ -40,16 +51,14 @@ export function breakLines(text: string, width: number, measure: (text: string) 
       continue;
     }
     if (line !== '') lines.push(line);
-    line = word;
-    while (measure(line) > width) {
-      if (!breakWords) return null;
-      const letters = [...line];
-      let count = letters.length - 1;
-      while (count > 1 && measure(letters.slice(0, count).join('')) > width) count -= 1;
-      if (count < 1 || measure(letters[0]!) > width) return null;
-      lines.push(letters.slice(0, count).join(''));
-      line = letters.slice(count).join('');
+    if (measure(word) <= width) {
+      line = word;
+      continue;
     }
+    const pieces = breakWords ? breakWord(word, width, measure) : null;
+    if (!pieces) return null;
+    lines.push(...pieces.slice(0, -1));
+    line = pieces.at(-1)!;
   }
   if (line !== '') lines.push(line);
   return lines;

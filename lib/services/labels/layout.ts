@@ -1,6 +1,6 @@
 import type { Design } from '@/lib/contracts/labels';
 import { highestFrom, type Fall } from './fall';
-import { ASCENT, DESCENT, fitFacts, fitText, type Box, type Fact, type Measure, type Placed } from './fit';
+import { ASCENT, boxOf, DESCENT, fitFacts, fitText, type Box, type Fact, type Measure, type Placed } from './fit';
 
 export const MM = 72 / 25.4;
 
@@ -26,6 +26,10 @@ export interface LabelPicture {
   rules: Array<{ x1: number; x2: number; y: number }>;
 }
 
+/** Small letters of this size are 0.9 mm high, points: the least on a small pack by Regulation (EU) 1169/2011, Article 13 (from memory). */
+const READABLE_PT = 4.7;
+/** Under this a long word of a name is broken instead, points. */
+const SMALLEST_NAME_PT = 9;
 /** The code is never smaller than this, or phones do not read it: 14 mm with 1 mm clear on either side. */
 const QR_MM = 14;
 const QR_CLEAR_MM = 1;
@@ -60,10 +64,24 @@ function foot(text: LabelText, frame: Frame, top: number, left: number, qrTop = 
   const qrRoom = bottom - qrTop;
   const qr: Box | null = text.qr && qrRoom >= qrSide && width - left > 2.2 * qrSide ? { x: width - margin - qrSide, y: bottom - qrSide - (qrRoom - qrSide) / 2, w: qrSide, h: qrSide } : null;
   const w = (qr ? qr.x - clear : width - margin) - left;
-  const smallH = text.small ? Math.min(room * 0.36, 7 * scale * 2.2) : 0;
-  const facts = fitFacts(text.facts, { x: left, y: top, w, h: room - smallH - (smallH ? margin * 0.25 : 0) }, 9.5 * Math.max(scale, 0.6), measure);
-  const small = fitText(text.small, { x: left, y: bottom - smallH, w, h: smallH }, { face: 'plain', largest: Math.max(5, 6.8 * scale), smallest: 4.5, lines: 3, align: 'left', valign: 'bottom' }, measure);
+  const small = smallPrint(text.small, { x: left, w, bottom, room }, frame);
+  const smallTop = Math.min(bottom, ...small.map((line) => boxOf(line).y));
+  const facts = fitFacts(text.facts, { x: left, y: top, w, h: smallTop - top - (small.length > 0 ? margin * 0.25 : 0) }, 9.5 * Math.max(scale, 0.6), measure);
   return { texts: [...facts, ...small], qr };
+}
+
+/** Share of the foot that the words of the law may take: more only where they would else be too small to read. */
+const SMALL_SHARES = [0.36, 0.46, 0.56, 0.66];
+
+/** Allergens and what else has to be read: it gets room before the facts do. */
+function smallPrint(words: string, { x, w, bottom, room }: { x: number; w: number; bottom: number; room: number }, { scale, measure }: Frame): Placed[] {
+  let lines: Placed[] = [];
+  for (const share of SMALL_SHARES) {
+    const h = room * share;
+    lines = fitText(words, { x, y: bottom - h, w, h }, { face: 'plain', largest: Math.max(READABLE_PT, 6.8 * scale), smallest: READABLE_PT, lines: 8, align: 'left', valign: 'bottom' }, measure);
+    if ((lines[0]?.size ?? READABLE_PT) >= READABLE_PT) return lines;
+  }
+  return lines;
 }
 
 /** The label is the log: the fall from the left, the name in the space it leaves. */
@@ -107,7 +125,7 @@ function nameBeside(text: LabelText, frame: Frame, fall: Fall, art: Box, floor: 
     const underH = text.under ? underSize * 1.5 : 0;
     const box: Box = { x, y: margin, w: width - margin - x, h: bottom - margin - underH };
     if (box.h < 8 || box.w < 20) continue;
-    const name = fitText(text.name, box, { face: 'name', largest: nameSize(text.name) * scale, smallest: 7, lines: 3, align: 'right', valign: 'top' }, measure);
+    const name = fitText(text.name, box, { face: 'name', largest: nameSize(text.name) * scale, smallest: SMALLEST_NAME_PT, lines: 3, align: 'right', valign: 'top' }, measure);
     if (name.length === 0 || (best[0] && name[0]!.size <= best[0].size)) continue;
     const last = name.at(-1)!;
     const under = fitText(text.under, { x, y: last.y + last.size * 0.3, w: box.w, h: underH }, { face: 'plain', largest: underSize, smallest: 4.5, lines: 1, align: 'right' }, measure);
@@ -144,7 +162,7 @@ function plainLabel(text: LabelText, frame: Frame): LabelPicture {
   const { width, height, margin, scale, measure } = frame;
   const split = height * 0.52;
   const underH = text.under ? Math.max(6, 11 * scale) : 0;
-  const name = fitText(text.name, { x: margin, y: margin, w: width - 2 * margin, h: split - margin * 1.6 - underH }, { face: 'name', largest: nameSize(text.name) * scale * 1.15, smallest: 7, lines: 3, align: 'left', valign: 'middle' }, measure);
+  const name = fitText(text.name, { x: margin, y: margin, w: width - 2 * margin, h: split - margin * 1.6 - underH }, { face: 'name', largest: nameSize(text.name) * scale * 1.15, smallest: SMALLEST_NAME_PT, lines: 3, align: 'left', valign: 'middle' }, measure);
   const under = fitText(text.under, { x: margin, y: split - margin * 0.6 - underH, w: width - 2 * margin, h: underH }, { face: 'plain', largest: Math.max(5, 8.4 * scale), smallest: 4.5, lines: 1, align: 'left' }, measure);
   const footer = foot(text, frame, split + margin * 0.6, margin);
   return { texts: [...name, ...under, ...footer.texts], qr: footer.qr, art: null, rules: [{ x1: margin, x2: width - margin, y: split }] };
@@ -157,7 +175,7 @@ function bandsLabel(text: LabelText, frame: Frame): LabelPicture {
   const left = band.w + margin;
   const split = height * 0.52;
   const underH = text.under ? Math.max(6, 11 * scale) : 0;
-  const name = fitText(text.name, { x: left, y: margin, w: width - margin - left, h: split - margin * 1.4 - underH }, { face: 'name', largest: nameSize(text.name) * scale, smallest: 7, lines: 3, align: 'left', valign: 'top' }, measure);
+  const name = fitText(text.name, { x: left, y: margin, w: width - margin - left, h: split - margin * 1.4 - underH }, { face: 'name', largest: nameSize(text.name) * scale, smallest: SMALLEST_NAME_PT, lines: 3, align: 'left', valign: 'top' }, measure);
   const last = name.at(-1);
   const under = fitText(text.under, { x: left, y: last ? last.y + last.size * 0.3 : margin, w: width - margin - left, h: underH }, { face: 'plain', largest: Math.max(5, 8.4 * scale), smallest: 4.5, lines: 1, align: 'left' }, measure);
   const footer = foot(text, frame, split + margin * 0.3, left);

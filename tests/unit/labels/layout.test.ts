@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { DESIGNS, STOCKS, type StockKey } from '@/lib/contracts/labels';
 import { fallOf, highestFrom } from '@/lib/services/labels/fall';
 import { boxOf, breakLines, fitText, type Box, type Measure } from '@/lib/services/labels/fit';
-import { runsOf } from '@/lib/services/labels/fonts';
+import { fontFiles, runsOf } from '@/lib/services/labels/fonts';
 import { layLabel, MM, type LabelText } from '@/lib/services/labels/layout';
 
 /** A face in which every letter is as wide as a wide one of the real faces. */
@@ -118,9 +118,34 @@ describe('text', () => {
 
   it('is set in the face that has its letters, and a sign that none has is a dot', () => {
     const has = new Set(['name-latin', 'name-latin-ext', 'strong-cyrillic', 'strong-latin']);
-    expect(runsOf('Žď Mead', 'name', has)).toEqual([{ font: 'name-latin-ext', text: 'Žď' }, { font: 'name-latin', text: ' Mead' }]);
-    expect(runsOf('Сидр', 'name', has)).toEqual([{ font: 'strong-cyrillic', text: 'Сидр' }]);
-    expect(runsOf('🍐', 'name', has)).toEqual([{ font: 'name-latin', text: '·' }]);
+    expect(runsOf('Žď Mead', 'name', has)).toMatchObject([{ font: 'name-latin-ext', text: 'Žď' }, { font: 'name-latin', text: ' Mead' }]);
+    expect(runsOf('Сидр', 'name', has)).toMatchObject([{ font: 'strong-cyrillic', text: 'Сидр' }]);
+    expect(runsOf('🍐', 'name', has)).toMatchObject([{ font: 'name-latin', text: '·' }]);
+  });
+
+  it('that runs leftwards stands so, its figures and Latin words the other way', () => {
+    const has = new Set(fontFiles().map(({ font }) => font));
+    const set = (line: string) => runsOf(line, 'name', has).map((run) => run.text);
+    expect(set('סיידר תפוחים 2026')).toEqual(['2026', ' ', 'תפוחים', ' ', 'סיידר']);
+    expect(set('Crab סיידר cider')).toEqual(['Crab ', 'סיידר', ' cider']);
+    expect(set('תפוח (חדש)').join('')).toBe('(חדש) תפוח');
+    expect(runsOf('نبيذ', 'name', has)).toMatchObject([{ font: 'name-arabic', text: 'نبيذ' }]);
+  });
+
+  it('breaks a long word into pieces about as long as each other', () => {
+    expect(breakLines('abcdefghijk', 10, (line) => line.length, true)).toEqual(['abcdef', 'ghijk']);
+  });
+
+  it('of the law is never set smaller than can be read where there is room for it, whatever the facts beside it', () => {
+    const small = 'Contains sulphites, milk, egg. Made from wheat and barley (gluten) and honey; may contain traces of nuts, soya and celery.';
+    for (const stock of Object.keys(STOCKS) as StockKey[]) {
+      for (const design of DESIGNS) {
+        const { label, neck } = STOCKS[stock];
+        const { texts } = layLabel(text({ small }), design, { ...label, neck }, fall, measure);
+        const lines = texts.filter((placed) => small.includes(placed.text) && placed.text.length > 8);
+        expect(Math.min(...lines.map((line) => line.size)), `${stock} ${design}`).toBeGreaterThanOrEqual(4.5);
+      }
+    }
   });
 });
 
