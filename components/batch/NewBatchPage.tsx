@@ -23,7 +23,7 @@ import { typedNumber } from './figures';
 import { focusFirstError } from './focus';
 
 /** `must`: the sheet it is made from, in the version given. */
-export function NewBatchPage({ must = null, version }: { must?: string | null; version?: number | undefined }) {
+export function NewBatchPage({ must = null, version, gravity = '' }: { must?: string | null; version?: number | undefined; /** As measured at the sheet, SG. */ gravity?: string }) {
   const { me, may, error: notMe, retry: askMe } = useMe();
   const { proposal, error: noProposal, retry: askProposal } = useBatchProposal(must, { ...(version === undefined ? {} : { version }) });
   const now = useNow();
@@ -44,13 +44,13 @@ export function NewBatchPage({ must = null, version }: { must?: string | null; v
       </EmptyState>
     );
   }
-  return <NewBatchForm timeZone={me.cellar.time_zone} now={now / 1000} proposal={proposal ?? null} />;
+  return <NewBatchForm timeZone={me.cellar.time_zone} now={now / 1000} proposal={proposal ?? null} gravity={gravity} />;
 }
 
-function NewBatchForm({ timeZone, now, proposal }: { timeZone: string; now: number; proposal: BatchProposal | null }) {
+function NewBatchForm({ timeZone, now, proposal, gravity }: { timeZone: string; now: number; proposal: BatchProposal | null; gravity: string }) {
   const router = useRouter();
   const { sensors } = useSensors();
-  const [draft, setDraft] = useState<BatchDraft>(() => (proposal ? draftOfProposal(proposal, now, timeZone) : newDraft('cider', now, timeZone)));
+  const [draft, setDraft] = useState<BatchDraft>(() => ({ ...(proposal ? draftOfProposal(proposal, now, timeZone) : newDraft('cider', now, timeZone)), gravity }));
   const [errors, setErrors] = useState<BatchErrors>({});
   const [failed, setFailed] = useState<string | null>(null);
   const [sending, setSending] = useState(false);

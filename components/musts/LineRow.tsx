@@ -7,13 +7,14 @@ import { Field, Select } from '@/components/ui/Field';
 import { camelKeys } from '@/lib/contracts/case';
 import { bring, inputsOf } from '@/lib/core/must/line';
 import { about, exactly } from '@/lib/core/units/range';
-import { amountOf, amountText } from './amount';
-import { unitsFor, withSugar, type LineDraft } from './draft';
+import { amountText } from './amount';
+import { bareAmount, quantityOf, withAmount, withSugar, withUnit, type LineDraft } from './draft';
+import { unitsFor } from './units-for';
 import { PRESERVATIVE_WORDS, unitWord, weight } from './words';
 
 /** What the line brings, in words; null while it cannot be weighed. */
 function broughtBy(line: LineDraft): string | null {
-  const quantity = amountOf(line.amount);
+  const quantity = quantityOf(line);
   if (!quantity) return null;
   try {
     const core = camelKeys({ id: line.id, ingredient: line.ingredient, amount: { quantity, unit: line.unit }, cost_per_unit: null });
@@ -47,12 +48,17 @@ interface LineRowProps {
   onRemove: () => void;
 }
 
+/** Name, amount, unit and two buttons; on a phone the name stands above the rest. */
+export const LINE_COLUMNS = 'grid-cols-[minmax(0,1fr)_5.75rem_auto] strip:grid-cols-[minmax(0,1fr)_8.5rem_8rem_9rem]';
+/** The name of the line, or the head of the column, stands for the label. */
+const UNLABELLED = '[&>label]:heard-only gap-0.5!';
+
 /** One line of the sheet: what, how much, what it brings; the rest behind a word. */
 export function LineRow({ line, error, first, last, onChange, onMove, onRemove }: LineRowProps) {
   const [open, setOpen] = useState(false);
   const details = useId();
   const { ingredient } = line;
-  const quantity = amountOf(line.amount);
+  const quantity = quantityOf(line);
   const judged = quantity !== null && quantity.lo < quantity.hi;
   const sweet = ingredient.extract_share.hi > 0;
   const sugar = ingredient.extract_share;
@@ -62,21 +68,31 @@ export function LineRow({ line, error, first, last, onChange, onMove, onRemove }
   const about100 = (value: number) => String(Number((100 * value).toFixed(1)));
 
   return (
-    <li className="border-b border-rule py-2.5">
-      <div className="grid grid-cols-[minmax(0,1fr)_minmax(0,7.5rem)] gap-x-3 gap-y-1 strip:grid-cols-[minmax(0,1fr)_8.5rem_8rem_auto] strip:items-end">
-        <div className="min-w-0 self-center max-strip:col-span-full">
+    <li className="border-b border-rule py-2">
+      <div className={`grid gap-x-2 gap-y-1 ${LINE_COLUMNS}`}>
+        <div className="min-w-0 max-strip:col-span-full">
           <p className="type-name-low break-words">{ingredient.name}</p>
-          <p className="type-label text-ink2">{brings ?? ' '}</p>
+          {brings && <p className="type-label text-ink2">{brings}</p>}
         </div>
-        <Field label={<>Amount<span className="heard-only"> of {ingredient.name}</span></>} value={line.amount} onChange={(event) => onChange({ ...line, amount: event.target.value })} error={error} inputMode="text" autoComplete="off" />
-        <Select label={<>Unit<span className="heard-only"> of {ingredient.name}</span></>} value={line.unit} onChange={(event) => onChange({ ...line, unit: event.target.value as LineDraft['unit'] })}>
+        <Field
+          label={`Amount of ${ingredient.name}`}
+          className={UNLABELLED}
+          value={line.amount}
+          onChange={(event) => onChange(withAmount(line, event.target.value))}
+          onBlur={() => bareAmount(line) !== line.amount && onChange({ ...line, amount: bareAmount(line) })}
+          error={error}
+          inputMode="text"
+          autoComplete="off"
+          placeholder="how much"
+        />
+        <Select label={`Unit of ${ingredient.name}`} className={UNLABELLED} value={line.unit} onChange={(event) => onChange(withUnit(line, event.target.value as LineDraft['unit']))}>
           {unitsFor(ingredient).map((unit) => (
             <option key={unit} value={unit}>
               {unitWord(unit, ingredient)}
             </option>
           ))}
         </Select>
-        <div className="flex flex-wrap gap-2 max-strip:col-span-full">
+        <div className="flex gap-2 self-start max-strip:[&>*]:px-2.5 strip:pt-0.5">
           <Button
             look={judged ? 'first' : 'quiet'}
             aria-pressed={judged}

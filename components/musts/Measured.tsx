@@ -1,8 +1,8 @@
 'use client';
 
-import { useState } from 'react';
 import { points, typedGravity, typedNumber } from '@/components/batch/figures';
 import { Box } from '@/components/ui/Box';
+import { LinkButton } from '@/components/ui/Button';
 import { Choice } from '@/components/ui/Choice';
 import { Field } from '@/components/ui/Field';
 import { How } from '@/components/ui/How';
@@ -13,6 +13,7 @@ import type { MustBody } from '@/lib/contracts/musts';
 import { gapOf, measuredOriginal, type Measurement } from '@/lib/core/must/original-gravity';
 import { pitchChecklist } from '@/lib/core/must/pitch';
 import type { Range } from '@/lib/core/units/range';
+import { useKept } from './use-kept';
 import { ends } from './words';
 
 const isNumber = (value: number | null): value is number => value !== null && Number.isFinite(value);
@@ -51,15 +52,23 @@ function Gap({ expected, measured }: { expected: Range; measured: Range }) {
   );
 }
 
+interface Typed {
+  instrument: Measurement['with'];
+  reading: string;
+  sample: string;
+  calibration: string;
+  mustC: string;
+  dry: string;
+  ticked: readonly string[];
+}
+
 /** The original gravity as measured, against what was promised; then the pitch, step by step. */
-export function Measured({ must }: { must: MustBody }) {
-  const [instrument, setInstrument] = useState<Measurement['with']>('hydrometer');
-  const [reading, setReading] = useState('');
-  const [sample, setSample] = useState('20');
-  const [calibration, setCalibration] = useState('20');
-  const [mustC, setMustC] = useState('');
-  const [dry, setDry] = useState('');
-  const [ticked, setTicked] = useState<ReadonlySet<string>>(new Set());
+export function Measured({ must, keptAs, mayStart }: { must: MustBody; keptAs: string; mayStart: boolean }) {
+  // Kept in the tab: between the hydrometer and the kettle the page is closed more than once.
+  const [typed, setTyped] = useKept<Typed>(keptAs, () => ({ instrument: 'hydrometer', reading: '', sample: '20', calibration: '20', mustC: '', dry: '', ticked: [] }));
+  const { instrument, reading, sample, calibration, mustC, dry } = typed;
+  const set = (field: 'reading' | 'sample' | 'calibration' | 'mustC' | 'dry') => (event: { target: { value: string } }) => setTyped({ ...typed, [field]: event.target.value });
+  const ticked = new Set(typed.ticked);
   const measurement = measurementOf(instrument, reading, sample, calibration);
   const measured = measurement && measuredOriginal(measurement);
   const expected = must.result.ok ? must.result.outcome.gravity_at_pitch.value : null;
@@ -73,18 +82,18 @@ export function Measured({ must }: { must: MustBody }) {
         <h3 id="measured" className="type-verdict-now">
           Original gravity
         </h3>
-        <Choice label="Read with" bare value={instrument} onChoose={setInstrument} options={[{ value: 'hydrometer', name: 'Hydrometer' }, { value: 'refractometer', name: 'Refractometer' }]} />
-        <Field label={instrument === 'hydrometer' ? 'Gravity as read' : 'As read'} unit={instrument === 'hydrometer' ? 'SG' : '°Bx'} inputMode="decimal" autoComplete="off" placeholder={instrument === 'hydrometer' ? '1.062' : '15.2'} value={reading} onChange={(event) => setReading(event.target.value)} />
+        <Choice label="Read with" bare value={instrument} onChoose={(next) => setTyped({ ...typed, instrument: next })} options={[{ value: 'hydrometer', name: 'Hydrometer' }, { value: 'refractometer', name: 'Refractometer' }]} />
+        <Field label={instrument === 'hydrometer' ? 'Gravity as read' : 'As read'} unit={instrument === 'hydrometer' ? 'SG' : '°Bx'} inputMode="decimal" autoComplete="off" placeholder={instrument === 'hydrometer' ? '1.062' : '15.2'} value={reading} onChange={set('reading')} />
         <div className="grid grid-cols-2 gap-3">
-          <Field label="Sample" unit="°C" inputMode="decimal" autoComplete="off" value={sample} onChange={(event) => setSample(event.target.value)} hint={instrument === 'refractometer' ? 'Empty: it corrects itself.' : undefined} />
-          {instrument === 'hydrometer' && <Field label="Hydrometer made for" unit="°C" inputMode="decimal" autoComplete="off" value={calibration} onChange={(event) => setCalibration(event.target.value)} hint="20, or 15.56 on older ones." />}
+          <Field label="Sample" unit="°C" inputMode="decimal" autoComplete="off" value={sample} onChange={set('sample')} hint={instrument === 'refractometer' ? 'Empty: it corrects itself.' : undefined} />
+          {instrument === 'hydrometer' && <Field label="Hydrometer made for" unit="°C" inputMode="decimal" autoComplete="off" value={calibration} onChange={set('calibration')} hint="20, or 15.56 on older ones." />}
         </div>
         <div aria-live="polite">
           {measured && !measured.ok && <p className="type-body border-l-[3px] border-madder pl-3"><Sentence>{measured.sentence}</Sentence></p>}
           {measured?.ok && (
             <>
               <p className="type-verdict-now">
-                At 20 °C: <span className="fig-strong">{measured.gravity.value.value.toFixed(4)}</span> <span className="type-label text-ink2">{ends(measured.gravity.value, 4)}</span>
+                <Sentence strong>{`At 20 °C it is ${measured.gravity.value.value.toFixed(4)}`}</Sentence> <span className="type-label text-ink2">{ends(measured.gravity.value, 4)}</span>
               </p>
               <How how={measured.gravity.how} of="the corrected gravity" />
               {expected && <Gap expected={expected} measured={measured.gravity.value} />}
@@ -97,8 +106,8 @@ export function Measured({ must }: { must: MustBody }) {
           Pitch, step by step
         </h3>
         <div className="grid grid-cols-2 gap-3">
-          <Field label="Must now" unit="°C" inputMode="decimal" autoComplete="off" value={mustC} onChange={(event) => setMustC(event.target.value)} />
-          <Field label="Dry yeast" unit="g" inputMode="decimal" autoComplete="off" value={dry} onChange={(event) => setDry(event.target.value)} />
+          <Field label="Must now" unit="°C" inputMode="decimal" autoComplete="off" value={mustC} onChange={set('mustC')} />
+          <Field label="Dry yeast" unit="g" inputMode="decimal" autoComplete="off" value={dry} onChange={set('dry')} />
         </div>
         <div aria-live="assertive">
           {check.stops.map((stop) => (
@@ -111,7 +120,7 @@ export function Measured({ must }: { must: MustBody }) {
         <ol className="flex flex-col">
           {check.steps.map((step) => (
             <li key={step.key} className="border-b border-rule py-2">
-              <Box ticked={ticked.has(step.key)} notYet={step.key === 'pitch' && check.stops.length > 0} onTick={(on) => setTicked((keys) => { const next = new Set(keys); if (on) next.add(step.key); else next.delete(step.key); return next; })}>
+              <Box ticked={ticked.has(step.key)} notYet={step.key === 'pitch' && check.stops.length > 0} onTick={(on) => setTyped({ ...typed, ticked: on ? [...typed.ticked, step.key] : typed.ticked.filter((key) => key !== step.key) })}>
                 <span className="type-body">
                   <Sentence>{step.sentence}</Sentence>
                   {step.caution && <span className="type-reason block text-ink2"><Sentence>{step.caution}</Sentence></span>}
@@ -121,6 +130,11 @@ export function Measured({ must }: { must: MustBody }) {
           ))}
         </ol>
         <How how={check.how} of="the checklist" />
+        {mayStart && measured?.ok && (
+          <LinkButton look="first" className="self-end" href={`/batches/new?must=${must.id}&version=${must.version}&og=${measured.gravity.value.value.toFixed(4)}`}>
+            Start a batch with it
+          </LinkButton>
+        )}
       </section>
     </div>
   );

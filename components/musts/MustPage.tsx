@@ -31,5 +31,5 @@ export function MustPage({ id }: { id: string }) {
     );
   }
   if (!must || !me) return <Haze height={400} className="m-(--margin)" label="Loading the sheet" />;
-  return <MustSheetPage key={must.version_id} must={must} mayWrite={may('musts.write')} mayStart={may('batches.create')} timeZone={me.cellar.time_zone} onVersion={setVersion} />;
+  return <MustSheetPage key={must.version_id} must={must} mayWrite={may('musts.write')} mayStart={may('batches.create')} keptAs={`${me.person.id} ${me.cellar.id}`} timeZone={me.cellar.time_zone} onVersion={setVersion} />;
 }

@@ -11,7 +11,10 @@ import type { MustBody } from '@/lib/contracts/musts';
 import { CopyForm } from './CopyForm';
 import { draftOf } from './draft';
 import { Measured } from './Measured';
+import { NotKeptYet } from './NotKeptYet';
+import { PutAway } from './PutAway';
 import { useKeep } from './use-keep';
+import { useKept } from './use-kept';
 import { Versions } from './Versions';
 import { Workbench } from './Workbench';
 import { WorkSheet } from './WorkSheet';
@@ -20,12 +23,14 @@ interface MustSheetPageProps {
   must: MustBody;
   mayWrite: boolean;
   mayStart: boolean;
+  /** The person and cellar that what is written here belongs to. */
+  keptAs: string;
   timeZone: string;
   onVersion: (version: number | undefined) => void;
 }
 
-export function MustSheetPage({ must, mayWrite, mayStart, timeZone, onVersion }: MustSheetPageProps) {
-  const [draft, setDraft] = useState(() => draftOf(must.sheet));
+export function MustSheetPage({ must, mayWrite, mayStart, keptAs, timeZone, onVersion }: MustSheetPageProps) {
+  const [draft, setDraft, found, forget] = useKept(`${keptAs} ${must.version_id}`, () => draftOf(must.sheet));
   const [note, setNote] = useState('');
   const [opened, setOpened] = useState<'copy' | 'measure' | null>(null);
   const newest = must.versions[0]?.version ?? must.version;
@@ -34,6 +39,7 @@ export function MustSheetPage({ must, mayWrite, mayStart, timeZone, onVersion }:
 
   const { errors, failed, sending, save } = useKeep(async (sheet) => {
     await updateMust(must.id, { sheet, base_version: newest, change_note: note.trim() === '' ? null : note });
+    forget();
     onVersion(undefined);
   });
 
@@ -45,6 +51,7 @@ export function MustSheetPage({ must, mayWrite, mayStart, timeZone, onVersion }:
           meta={
             <>
               version {must.version}
+              {must.archived && ', put away'}
               {old && `, not the newest (${newest})`}
               {must.copied_from && `, copied from ${must.copied_from.name}`}
             </>
@@ -68,6 +75,7 @@ export function MustSheetPage({ must, mayWrite, mayStart, timeZone, onVersion }:
           </p>
         ))}
       </div>
+      {found && changed && <NotKeptYet />}
       <Workbench draft={draft} errors={errors} onChange={setDraft}>
         {mayWrite ? (
           <>
@@ -75,7 +83,13 @@ export function MustSheetPage({ must, mayWrite, mayStart, timeZone, onVersion }:
             {failed && <FormError>{failed}</FormError>}
             <div className="flex justify-end gap-2">
               {changed && (
-                <Button look="quiet" onClick={() => setDraft(draftOf(must.sheet))}>
+                <Button
+                  look="quiet"
+                  onClick={() => {
+                    setDraft(draftOf(must.sheet));
+                    forget();
+                  }}
+                >
                   As it was
                 </Button>
               )}
@@ -88,6 +102,7 @@ export function MustSheetPage({ must, mayWrite, mayStart, timeZone, onVersion }:
           <p className="type-reason text-ink2">You may try changes here; a brewer keeps them.</p>
         )}
         <Versions must={must} timeZone={timeZone} onVersion={(version) => onVersion(version === newest ? undefined : version)} />
+        {mayWrite && <PutAway must={must} />}
       </Workbench>
       <WorkSheet must={must} timeZone={timeZone} />
       {opened === 'copy' && (
@@ -97,7 +112,7 @@ export function MustSheetPage({ must, mayWrite, mayStart, timeZone, onVersion }:
       )}
       {opened === 'measure' && (
         <Sheet title="Measure and pitch" onClose={() => setOpened(null)}>
-          <Measured must={must} />
+          <Measured must={must} keptAs={`${keptAs} ${must.version_id} measured`} mayStart={mayStart && !changed} />
         </Sheet>
       )}
     </>

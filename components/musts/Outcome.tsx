@@ -64,25 +64,40 @@ function Strengths({ outcome }: { outcome: MustOutcome }) {
 /** Pieces give their sugar, and fruit its juice, over days: the must may rise or fall until then. */
 const pitchWords = (pitch: number, whole: number): string => (pitch < whole ? `${pitch.toFixed(3)} at the pitch, the rest of the sugar comes over days` : `${pitch.toFixed(3)} at the pitch, before the fruit has let go of its juice`);
 
-const NOTE_STATE = { preservative: 'Check', volume: 'Check', tolerance: 'Check', diastatic: 'Check', dose: 'Check' } as const;
+/** What may spoil the batch or hold it up is said first; what is only good to know stands below the figures. */
+const LOUD: ReadonlySet<MustOutcome['notes'][number]['kind']> = new Set(['preservative', 'tolerance', 'diastatic', 'dose']);
+const sentence = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
 
-function Notes({ outcome }: { outcome: MustOutcome }) {
-  const loud = outcome.notes.filter((note) => note.kind in NOTE_STATE);
-  const quiet = outcome.notes.filter((note) => !(note.kind in NOTE_STATE));
-  const nitrogen = outcome.nitrogen.notes;
-  if (loud.length + quiet.length + nitrogen.length === 0) return null;
+function LoudNotes({ outcome }: { outcome: MustOutcome }) {
+  const notes = [...outcome.notes.filter((note) => LOUD.has(note.kind)).map((note) => note.sentence), ...outcome.nitrogen.notes];
+  if (notes.length === 0) return null;
+  return (
+    <section aria-label="To check" className="mt-3 border-l-[3px] border-ochre pl-3">
+      <State state="Check" word={notes.length === 1 ? 'Check' : `Check ${notes.length} things`} />
+      <ul>
+        {notes.map((text) => (
+          <li key={text} className="type-reason border-b border-rule py-1 last:border-b-0">
+            <Sentence>{sentence(text)}</Sentence>
+          </li>
+        ))}
+      </ul>
+    </section>
+  );
+}
+
+function QuietNotes({ outcome }: { outcome: MustOutcome }) {
+  // That it does not fit is said at the vessel.
+  const notes = outcome.notes.filter((note) => !LOUD.has(note.kind) && note.kind !== 'volume');
+  if (notes.length === 0) return null;
   return (
     <section aria-labelledby="notes" className="mt-4">
       <h3 id="notes" className="type-verdict border-b pb-1">
         To mind
       </h3>
       <ul>
-        {[...loud.map((note) => ({ text: note.sentence, check: true })), ...nitrogen.map((text) => ({ text, check: true })), ...quiet.map((note) => ({ text: note.sentence, check: false }))].map((note) => (
-          <li key={note.text} className="flex flex-col gap-0.5 border-b border-rule py-1.5">
-            {note.check && <State state="Check" size={13} />}
-            <span className="type-reason">
-              <Sentence>{note.text.charAt(0).toUpperCase() + note.text.slice(1)}</Sentence>
-            </span>
+        {notes.map((note) => (
+          <li key={note.sentence} className="type-reason border-b border-rule py-1.5">
+            <Sentence>{sentence(note.sentence)}</Sentence>
           </li>
         ))}
       </ul>
@@ -111,7 +126,7 @@ export function Outcome({ result, kind, vesselL, missing }: { result: MustResult
   const level = vesselL === null ? null : Math.min(1, outcome.fillL.value.value / vesselL);
   const pitchDiffers = Math.abs(outcome.gravityAtPitch.value.value - og.value) >= 0.0005;
   return (
-    <div className="px-(--margin) py-4">
+    <div className="px-(--margin) pb-4 pt-5">
       <div className="flex items-end gap-4">
         <Vessel
           height={118}
@@ -125,6 +140,7 @@ export function Outcome({ result, kind, vesselL, missing }: { result: MustResult
           {neck && <How how={neck.how} of="foam and gas" />}
         </div>
       </div>
+      <LoudNotes outcome={outcome} />
       {missing > 0 && <p className="type-reason mt-2 border-l-[3px] border-ochre pl-3">{missing === 1 ? 'One line without an amount is left out.' : `${missing} lines without an amount are left out.`}</p>}
       <div className="mt-4">
         <div className="flex items-baseline justify-between gap-3">
@@ -158,7 +174,7 @@ export function Outcome({ result, kind, vesselL, missing }: { result: MustResult
         <Row name="sulphite" says={`${Math.ceil(outcome.sulphiteMgPerL.value.hi)} mg/L`} between="at most, without the yeast’s own" how={outcome.sulphiteMgPerL.how} />
         {outcome.cost.value.hi > 0 && <Row name="cost" says={outcome.cost.value.value.toFixed(2)} between={[spread(outcome.cost.value, 2), outcome.cost.known ? null : 'some lines have no cost'].filter(Boolean).join('; ')} how={outcome.cost.how} />}
       </dl>
-      <Notes outcome={outcome} />
+      <QuietNotes outcome={outcome} />
     </div>
   );
 }

@@ -11,7 +11,7 @@ import type { CatalogueBody, IngredientBody } from '@/lib/contracts/catalogue';
 import { INGREDIENT_KINDS } from '@/lib/core/must/ingredients';
 import { DRINK_KINDS } from '@/lib/core/types';
 import { newLine, type LineDraft, type SheetDraft, type SheetErrors } from './draft';
-import { LineRow } from './LineRow';
+import { LINE_COLUMNS, LineRow } from './LineRow';
 import { draftOfKind, emptyYeast } from './own-draft';
 import { IngredientOfOurs, YeastOfOurs } from './OwnForms';
 import { DRINK_WORDS, KIND_WORDS } from './words';
@@ -151,8 +151,15 @@ export function SheetEditor({ draft, errors, onChange, children }: SheetEditorPr
           <h2 id="lines" className="type-sub">
             What goes in
           </h2>
-          <p className="type-label text-ink2">Judged by eye is fine: about 0.5, or 300 to 380.</p>
+          <p className="type-label text-ink2">Judged by eye is fine: about half a jar, or 300 to 380 g.</p>
         </div>
+        {draft.lines.length > 0 && (
+          <div aria-hidden className={`type-label grid gap-x-2 border-b border-rule py-1 text-ink2 max-strip:hidden ${LINE_COLUMNS}`}>
+            <span>What, and what it brings</span>
+            <span>Amount</span>
+            <span>Unit</span>
+          </div>
+        )}
         {draft.lines.length === 0 && <p className="type-body py-3 text-ink2">No lines yet. Begin with the juice, the honey or the water.</p>}
         <ol>
           {draft.lines.map((line, index) => (

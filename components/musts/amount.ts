@@ -3,17 +3,32 @@ import { about, between, exactly, times, type Range } from '@/lib/core/units/ran
 const FRACTIONS: Record<string, string> = { '¼': ' 1/4', '½': ' 1/2', '¾': ' 3/4', '⅓': ' 1/3', '⅔': ' 2/3' };
 const NUMBER = '(?:\\d+\\s+)?\\d+/\\d+|\\d+(?:\\.\\d+)?|\\.\\d+';
 
+const SMALL = ['one', 'two', 'three', 'four', 'five', 'six', 'seven', 'eight', 'nine', 'ten', 'eleven', 'twelve'];
+/** Numbers that people write as words, the longer before the shorter. */
+const WORDS: readonly (readonly [RegExp, string])[] = [
+  [/\band a half\b/g, ' 1/2'],
+  [/\b(?:a |one )?half\b/g, '1/2'],
+  [/\bthree quarters\b/g, '3/4'],
+  [/\b(?:a |one )?quarter\b/g, '1/4'],
+  [/\btwo thirds\b/g, '2/3'],
+  [/\b(?:a |one )?third\b/g, '1/3'],
+  ...SMALL.map((word, index) => [new RegExp(`\\b${word}\\b`, 'g'), String(index + 1)] as const),
+  [/\ban?$/g, '1'],
+];
+const inFigures = (text: string): string => WORDS.reduce((all, [word, figure]) => all.replace(word, figure), text);
+
 function numberOf(text: string): number {
   const [, whole, over, under] = /^(?:(\d+)\s+)?(\d+)\/(\d+)$/.exec(text) ?? [];
   return over ? Number(whole ?? 0) + Number(over) / Number(under) : Number(text);
 }
 
 /**
- * An amount as a person writes it: `340`, `1/2`, `1 ½`, `about 0.5`, `300 to 380`,
+ * An amount as a person writes it: `340`, `1/2`, `1 ½`, `half`, `about 0.5`, `300 to 380`,
  * `340 (300 to 380)`. Null where it is none of these, or not a number of things.
  */
 export function amountOf(text: string): Range | null {
-  const plain = text.replace(/[¼½¾⅓⅔]/g, (sign) => FRACTIONS[sign] ?? sign).replace(/,/g, '.').trim().toLowerCase();
+  const signs = text.replace(/[¼½¾⅓⅔]/g, (sign) => FRACTIONS[sign] ?? sign);
+  const plain = inFigures(signs.replace(/,/g, '.').trim().toLowerCase()).trim();
   const match = new RegExp(`^(about|ca\\.?|~|≈)?\\s*(${NUMBER})(?:\\s*\\(?\\s*(?:(${NUMBER})\\s*)?(?:to|[-–])\\s*(${NUMBER})\\s*\\)?)?$`).exec(plain);
   if (!match?.[2]) return null;
   const first = numberOf(match[2]);

@@ -2,11 +2,12 @@ import { camelKeys } from '@/lib/contracts/case';
 import type { IngredientBody, YeastBody } from '@/lib/contracts/catalogue';
 import { mustSheetSchema, type MustSheetBody } from '@/lib/contracts/musts';
 import type { MustSheet } from '@/lib/core/must/sheet';
-import { exactly } from '@/lib/core/units/range';
-import { isMassUnit, isVolumeUnit, MEASURE_UNITS, type MeasureUnit } from '@/lib/core/units/measures';
+import { exactly, type Range } from '@/lib/core/units/range';
+import type { MeasureUnit } from '@/lib/core/units/measures';
 import type { DrinkKind } from '@/lib/core/types';
 import { typedNumber } from '@/components/batch/figures';
-import { amountOf, amountText } from './amount';
+import { amountText } from './amount';
+import { written } from './written';
 
 export interface LineDraft {
   id: string;
@@ -32,12 +33,6 @@ export interface SheetDraft {
 /** The sheet in the core's names. */
 export const coreSheet = (body: MustSheetBody): MustSheet => camelKeys(body);
 
-/** Units in which an ingredient can be weighed out. */
-export function unitsFor(ingredient: IngredientBody): MeasureUnit[] {
-  const byVolume = ingredient.density_g_per_ml !== null || ingredient.kind === 'juice';
-  return MEASURE_UNITS.filter((unit) => isMassUnit(unit) || (isVolumeUnit(unit) && byVolume) || (unit === 'each' && ingredient.each !== null));
-}
-
 /** What an ingredient is usually measured in. */
 const usualUnit = (ingredient: IngredientBody): MeasureUnit => (ingredient.kind === 'juice' || ingredient.kind === 'water' ? 'L' : ingredient.kind === 'grain' ? 'kg' : ingredient.key === 'sulphite-tablet' ? 'each' : 'g');
 
@@ -62,6 +57,18 @@ export function draftOf(body: MustSheetBody): SheetDraft {
 /** Sentences by field; a line's stand under its id. */
 export type SheetErrors = Record<string, string>;
 
+/** The line's amount in its unit; null while none is written, or one in another unit than the line's. */
+export function quantityOf({ amount, unit, ingredient }: LineDraft): Range | null {
+  const read = written(amount, ingredient);
+  return read && (read.unit === null || read.unit === unit) ? read.quantity : null;
+}
+
+/** The line with an amount as it is typed: a unit written behind it becomes the line's. */
+export const withAmount = (line: LineDraft, amount: string): LineDraft => ({ ...line, amount, unit: written(amount, line.ingredient)?.unit ?? line.unit });
+/** The unit is chosen beside it: what is written keeps its number alone. */
+export const withUnit = (line: LineDraft, unit: MeasureUnit): LineDraft => ({ ...line, unit, amount: bareAmount(line) });
+export const bareAmount = ({ amount, ingredient }: LineDraft): string => written(amount, ingredient)?.bare ?? amount;
+
 /** The sheet without what is not filled in yet, for the figures beside the form; and what is still missing. */
 export function bodyOf(draft: SheetDraft): { body: MustSheetBody; errors: SheetErrors } {
   const errors: SheetErrors = {};
@@ -74,7 +81,7 @@ export function bodyOf(draft: SheetDraft): { body: MustSheetBody; errors: SheetE
   };
   if (draft.name.trim() === '') errors.name = 'give the sheet a name';
   const lines = draft.lines.flatMap((line) => {
-    const quantity = amountOf(line.amount);
+    const quantity = quantityOf(line);
     if (!quantity) {
       errors[line.id] = line.amount.trim() === '' ? 'how much?' : 'write 340, about 340, or 300 to 380';
       return [];

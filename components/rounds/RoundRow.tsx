@@ -70,6 +70,7 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
   const [busy, setBusy] = useState(false);
   const done = ticks.ticked.has(job.id);
   const saved = ticks.saved.has(job.id);
+  const waiting = ticks.waiting.has(job.id);
   const mine = job.taken_by?.id === me;
 
   async function send(act: () => Promise<unknown>) {
@@ -84,9 +85,9 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
   }
 
   return (
-    <li className={`border-b px-(--margin) py-2 strip:flex strip:items-center strip:gap-6 ${row.late && !done ? 'bg-lit' : ''}`}>
+    <li className={`break-inside-avoid border-b px-(--margin) py-2 strip:flex strip:items-center strip:gap-6 print:px-0 print:py-0.5 ${row.late && !done ? 'bg-lit' : ''}`}>
       <div className="flex min-w-0 items-start gap-3 strip:flex-1">
-        <Box ticked={done} disabled={!mayDo} label={done ? `Take back: ${job.title}` : `Done: ${job.title}`} onTick={(on) => (on ? ticks.tick(job) : ticks.untick(job))} className="min-h-11 min-w-9 pt-3" />
+        <Box ticked={done} disabled={!mayDo} label={done ? `Take back: ${job.title}` : `Done: ${job.title}`} onTick={(on) => (on ? ticks.tick(job) : ticks.untick(job))} className="min-h-11 min-w-9 pt-3 print:min-h-0! print:pt-1.5" />
         <div className="min-w-0 flex-1 py-1">
           <p className="type-label text-ink2">
             <span className={row.late ? 'text-madder' : 'text-ink'} style={{ fontWeight: 700 }}>
@@ -94,6 +95,7 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
             </span>{' '}
             {row.note}
             {job.repeat_days && `, every ${job.repeat_days} days`}
+            {!job.taken_by && about(job) && <span className="hidden print:inline"> · {about(job)}</span>}
           </p>
           <p className="text-[1.0625rem]/[1.375rem] font-[560]">
             {job.batch ? (
@@ -105,24 +107,28 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
             )}
           </p>
           {job.note && <p className="type-reason text-ink2"><Sentence>{job.note}</Sentence></p>}
-          <p className="type-label text-ink2">
+          <p className={`type-label text-ink2 ${job.taken_by ? '' : 'print:hidden'}`}>
             {[about(job), job.taken_by ? `${mine ? 'you have' : `${firstName(job.taken_by.name)} has`} it` : 'nobody has it'].filter(Boolean).join(' · ')}
           </p>
         </div>
-        {row.left !== null && !done && <Countdown dueAt={job.due_at} />}
-        {job.batch && <span className="max-strip:hidden"><JobVessel batch={job.batch} /></span>}
+        {row.left !== null && !done && (
+          <span className="not-printed">
+            <Countdown dueAt={job.due_at} />
+          </span>
+        )}
+        {job.batch && <span className="not-printed max-strip:hidden"><JobVessel batch={job.batch} /></span>}
       </div>
       {done ? (
         <div className="not-printed flex shrink-0 items-center justify-end gap-3">
-          <span role="status" className="type-label text-ink2">{saved ? 'Done and logged.' : 'Saving'}</span>
-          <Button disabled={!saved} onClick={() => ticks.untick(job)}>Take it back</Button>
+          <span role="status" className="type-label text-ink2">{saved ? 'Done and logged.' : waiting ? 'Done. Waits to be sent.' : 'Saving'}</span>
+          <Button disabled={!saved && !waiting} onClick={() => ticks.untick(job)}>Take it back</Button>
         </div>
       ) : (
         mayDo && (
           <div className="not-printed flex flex-wrap items-center justify-end gap-2 strip:max-w-[55%] strip:shrink-0">
             {later &&
               laterTimes(now, timeZone).map((time) => (
-                <Button key={time.name} look="quiet" disabled={busy} onClick={() => void send(() => snoozeJob(job.id, new Date(time.at * 1000).toISOString()))}>
+                <Button key={time.name} look="quiet" disabled={busy} onClick={() => void send(() => snoozeJob(job, new Date(time.at * 1000).toISOString()))}>
                   {time.name}
                 </Button>
               ))}

@@ -16,6 +16,7 @@ import { CalendarFeed } from './CalendarFeed';
 import { NewJob } from './NewJob';
 import { RoundRow } from './RoundRow';
 import { countWords, dayStart, walk } from './rows';
+import { WaitingActs } from '@/components/offline/WaitingActs';
 import { useTicks } from './use-ticks';
 
 type Shown = 'today' | 'coming' | 'done';
@@ -71,6 +72,7 @@ function Walk({ now, timeZone, me, mayDo }: { now: number; timeZone: string; me:
         />
       </div>
       {shown === 'today' && <AirNote />}
+      <WaitingActs now={now} timeZone={timeZone} />
       {ticks.failed && <FormError>{ticks.failed}</FormError>}
       {error && !jobs ? (
         <ErrorState title="The rounds did not load" onRetry={retry}>

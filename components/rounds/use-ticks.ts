@@ -3,6 +3,9 @@
 import { useEffect, useRef, useState } from 'react';
 import { ClientError } from '@/lib/client/fetcher';
 import { doJob, undoJob } from '@/lib/client/jobs';
+import { dropAct } from '@/lib/client/unsent/send';
+import { isUnsentJob } from '@/lib/client/unsent/store';
+import { useUnsent } from '@/lib/client/unsent/use-unsent';
 import { UNDO_S, type JobBody } from '@/lib/contracts/jobs';
 
 export interface Ticks {
@@ -10,6 +13,8 @@ export interface Ticks {
   ticked: ReadonlyMap<string, JobBody>;
   /** Those of them that the server has kept. Until then nothing is said to be done. */
   saved: ReadonlySet<string>;
+  /** Those that wait on this device for the network. */
+  waiting: ReadonlySet<string>;
   failed: string | null;
   tick: (job: JobBody) => void;
   untick: (job: JobBody) => void;
@@ -22,6 +27,8 @@ export function useTicks(): Ticks {
   const [ticked, setTicked] = useState<ReadonlyMap<string, JobBody>>(new Map());
   const [saved, setSaved] = useState<ReadonlySet<string>>(new Set());
   const [failed, setFailed] = useState<string | null>(null);
+  const kept = useUnsent().filter(isUnsentJob).filter(({ act, state }) => act.does === 'done' && state === 'waiting');
+  const waiting = new Set(kept.map(({ job }) => job.id));
   const timers = useRef(new Map<string, ReturnType<typeof setTimeout>>());
 
   useEffect(() => {
@@ -37,15 +44,17 @@ export function useTicks(): Ticks {
   };
 
   return {
-    ticked,
+    ticked: new Map([...kept.map(({ job }) => [job.id, job] as const), ...ticked]),
     saved,
+    waiting,
     failed,
     fail: setFailed,
     tick: (job) => {
       setFailed(null);
       setTicked((before) => new Map(before).set(job.id, job));
-      doJob(job.id)
-        .then(() => {
+      doJob(job)
+        .then((done) => {
+          if ('kept' in done) return drop(job.id);
           setSaved((before) => new Set(before).add(job.id));
           timers.current.set(job.id, setTimeout(() => drop(job.id), UNDO_S * 1000));
         })
@@ -55,6 +64,7 @@ export function useTicks(): Ticks {
         });
     },
     untick: (job) => {
+      if (waiting.has(job.id)) return void dropAct(job.id, 'done');
       // What is still on its way cannot be taken back yet.
       if (!saved.has(job.id)) return;
       undoJob(job.id)

@@ -24,6 +24,8 @@ export async function updateMust(actor: Actor, id: string, input: UpdateMust, cl
     const latest = await loadVersion(must, undefined, transaction);
     if (input.change_note === null && isDeepStrictEqual(keptSheet(latest.body), input.sheet)) return getMust(actor, id, {}, transaction);
     await writeVersion(actor, must, { sheet: input.sheet, changeNote: input.change_note }, new Date(clock.now()), transaction);
+    // Who writes on a sheet that was put away wants it back.
+    if (must.archivedAt !== null) await must.update({ archivedAt: null }, { transaction });
     await auditBy(actor, 'must.updated', id, { version: must.latest, note: input.change_note }, transaction);
     return getMust(actor, id, {}, transaction);
   });
