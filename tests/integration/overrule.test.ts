@@ -1,5 +1,8 @@
 import { describe, expect, it } from 'vitest';
+import { QueryTypes } from 'sequelize';
+import { database } from '@/db/client';
 import { Alert, Entry, Job } from '@/db/models';
+import { lockAlertStates } from '@/db/queries/alert-states';
 import { ManualClock } from '@/lib/clock';
 import { createEntry as entryForm } from '@/lib/contracts/batches';
 import { ConflictError, ForbiddenError } from '@/lib/errors';
@@ -9,6 +12,7 @@ import { createEntry } from '@/lib/services/entries/create';
 import { removeEntry } from '@/lib/services/entries/remove';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildMember, buildSensor, writeReadings } from '../support/factories';
+import { until } from '../support/processes';
 
 useDatabase();
 
@@ -54,6 +58,20 @@ describe('a call that a person overrules', () => {
     await judge();
     expect(await open()).toBe(0);
     expect(await Job.count({ where: { batchId: batch.id, kind: 'stalled', droppedAt: null } })).toBe(0);
+  });
+
+  it('does not lock out the watch that judges the same batch, nor is locked out by it', async () => {
+    const { keeper, clock, batch, open, overrule } = await stalled();
+    // The watch has the states of the rules, and is about to open an alert.
+    const watch = await database().transaction();
+    await lockAlertStates(batch.id, watch);
+    const overruling = createEntry(keeper, batch.id, overrule(), clock);
+    await until('the person waits for the watch', async () => (await database().query(`select 1 from pg_locks l join pg_stat_activity a on a.pid = l.pid where not l.granted and a.datname = current_database()`, { type: QueryTypes.SELECT })).length > 0);
+    const { evidence } = await Alert.findOne({ where: { batchId: batch.id }, rejectOnEmpty: true });
+    await Alert.create({ cellarId: batch.cellarId, batchId: batch.id, call: 'temperature', kind: 'low', level: 'check', state: 'open', since: new Date(), openedAt: new Date(), evidence }, { transaction: watch });
+    await watch.commit();
+    await overruling;
+    expect(await open()).toBe(0);
   });
 
   it('is heeded again when that is taken back', async () => {

@@ -7,7 +7,7 @@ import { ConflictError, NotFoundError } from '@/lib/errors';
  * the same moment are told one after the other. Always before its memberships.
  */
 export async function lockCellar(cellarId: string, transaction: Transaction): Promise<Cellar> {
-  const cellar = await Cellar.findByPk(cellarId, { transaction, lock: transaction.LOCK.UPDATE });
+  const cellar = await Cellar.findByPk(cellarId, { transaction, lock: transaction.LOCK.NO_KEY_UPDATE });
   if (!cellar) throw new NotFoundError('cellar');
   return cellar;
 }

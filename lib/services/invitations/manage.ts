@@ -1,6 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { inTransaction } from '@/db/client';
-import { Cellar, Invitation, Membership, Person } from '@/db/models';
+import { Invitation, Membership, Person } from '@/db/models';
 import { letterStates, oweLetter } from '@/db/queries/letters';
 import { authorize } from '@/lib/auth/authorize';
 import { hashLinkToken, linkTokenOf } from '@/lib/auth/link-tokens';
@@ -11,6 +11,7 @@ import type { CreateInvitation, InvitationBody } from '@/lib/contracts/people';
 import { ConflictError, NotFoundError } from '@/lib/errors';
 import type { InvitationLetter } from '@/lib/mail/letters';
 import { auditBy } from '../audit/write';
+import { lockCellar } from '../cellars/keepers';
 import { notifyChange } from '../changes';
 import { namesOf } from '../entries/names';
 import { iso } from '../iso';
@@ -51,7 +52,7 @@ export async function createInvitation(actor: Actor, input: CreateInvitation, cl
   await invitationTriesOf(actor.personId).begin();
   const now = new Date(clock.now());
   return inTransaction(async (transaction) => {
-    const cellar = await Cellar.findByPk(actor.cellarId, { transaction, lock: transaction.LOCK.UPDATE, rejectOnEmpty: true });
+    const cellar = await lockCellar(actor.cellarId, transaction);
     const there = await personByEmail(input.email, transaction);
     if (there && (await Membership.count({ where: { cellarId: cellar.id, personId: there.id }, transaction }))) throw new ConflictError('They share the cellar already. Change their role in the list.');
     if ((await Invitation.count({ where: { cellarId: cellar.id, acceptedAt: null, revokedAt: null }, transaction })) >= MOST_OPEN) throw new ConflictError(`At most ${MOST_OPEN} invitations can wait. Take one back first.`);
