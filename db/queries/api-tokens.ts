@@ -18,15 +18,16 @@ const COLUMNS = `t.id, t.person_id as "personId", t.cellar_id as "cellarId", t.l
 const OPEN = 't.revoked_at is null and (t.expires_at is null or t.expires_at > now())';
 
 const BY_HASH: Prepared = { name: 'open-token', text: `select ${COLUMNS} where t.token_hash = $1 and ${OPEN}` };
-const BY_ID: Prepared = { name: 'open-token-by-id', text: `select ${COLUMNS} where t.id = $1 and ${OPEN}` };
+const BY_IDS: Prepared = { name: 'open-tokens-by-id', text: `select ${COLUMNS} where t.id = any($1::uuid[]) and ${OPEN}` };
 
 /** The token with its person's role in its cellar; none once it is revoked or expired, or the person has left. Every request of a program asks. */
 export async function openToken(tokenHash: Buffer): Promise<OpenToken | null> {
   return (await runPrepared<OpenToken>(database(), BY_HASH, [tokenHash])).rows[0] ?? null;
 }
 
-export async function openTokenById(id: string): Promise<OpenToken | null> {
-  return (await runPrepared<OpenToken>(database(), BY_ID, [id])).rows[0] ?? null;
+/** Of many tokens those that still open anything. */
+export async function openTokens(ids: readonly string[]): Promise<OpenToken[]> {
+  return (await runPrepared<OpenToken>(database(), BY_IDS, [[...new Set(ids)]])).rows;
 }
 
 export async function markTokenUsed(id: string, everyS: number): Promise<void> {

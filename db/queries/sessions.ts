@@ -25,6 +25,25 @@ export async function openSession(signInId: string): Promise<SessionRow[]> {
   return (await runPrepared<SessionRow>(database(), OPEN, [signInId])).rows;
 }
 
+export interface OpenSignIn {
+  signInId: string;
+  personId: string;
+  cellarId: string;
+  role: Role;
+}
+
+const STILL_OPEN: Prepared = {
+  name: 'open-sessions',
+  text: `select s.id as "signInId", m.person_id as "personId", m.cellar_id as "cellarId", m.role
+     from sign_ins s join memberships m on m.person_id = s.person_id
+     where s.id = any($1::uuid[]) and ${OPEN_SIGN_IN}`,
+};
+
+/** Of many sign-ins those that are open, with what each opens: one question, however many pages listen. */
+export async function openSessions(signInIds: readonly string[]): Promise<OpenSignIn[]> {
+  return (await runPrepared<OpenSignIn>(database(), STILL_OPEN, [[...new Set(signInIds)]])).rows;
+}
+
 /** Two servers may see the person in the same minute: the second changes nothing. */
 export async function markSeen(signInId: string, everyS: number): Promise<void> {
   await database().query(`update sign_ins set last_seen_at = now() where id = $signInId and last_seen_at < now() - make_interval(secs => $everyS)`, { bind: { signInId, everyS } });

@@ -1,8 +1,8 @@
 import 'server-only';
 import { decode } from 'next-auth/jwt';
 import { cookies } from 'next/headers';
-import { markTokenUsed, openToken, openTokenById, type OpenToken } from '@/db/queries/api-tokens';
-import { markSeen, openSession, type SessionRow } from '@/db/queries/sessions';
+import { markTokenUsed, openToken, openTokens, type OpenToken } from '@/db/queries/api-tokens';
+import { markSeen, openSession, openSessions, type SessionRow } from '@/db/queries/sessions';
 import { authSecret } from '../config/env';
 import { logFor } from '../log';
 import { apiTokenOf, hashApiToken, lesserRole } from './api-tokens';
@@ -62,14 +62,23 @@ export async function sessionOfBearer(header: string): Promise<Session | null> {
   return { signInId: null, token: { id: row.id, lastFour: row.lastFour }, personId: row.personId, actor: actorOfToken(row) };
 }
 
-/** Whether the sign-in or token is still open and the person still acts in that cellar in that role. */
-export async function holds(session: Pick<Session, 'signInId' | 'token'>, actor: Actor): Promise<boolean> {
-  if (session.token) {
-    const row = await openTokenById(session.token.id);
-    return row !== null && actorOfToken(row).role === actor.role;
-  }
-  const rows = session.signInId === null ? [] : await openSession(session.signInId);
-  return rows.some((row) => row.personId === actor.personId && row.cellarId === actor.cellarId && row.role === actor.role);
+/** Somebody who was let in for longer than one request. */
+export interface LetIn {
+  session: Pick<Session, 'signInId' | 'token'>;
+  actor: Actor;
+}
+
+const key = (by: string, { personId, cellarId, role }: Actor) => `${by} ${personId} ${cellarId} ${role}`;
+
+/** Of those let in, the ones whose sign-in or token is still open and who still act in that cellar in that role. */
+export async function stillIn<T extends LetIn>(all: readonly T[]): Promise<Set<T>> {
+  const signIns = all.flatMap(({ session }) => (session.token || session.signInId === null ? [] : [session.signInId]));
+  const tokens = all.flatMap(({ session }) => (session.token ? [session.token.id] : []));
+  const open = new Set([
+    ...(signIns.length ? await openSessions(signIns) : []).map((row) => key(row.signInId, row)),
+    ...(tokens.length ? await openTokens(tokens) : []).map((row) => key(row.id, actorOfToken(row))),
+  ]);
+  return new Set(all.filter(({ session, actor }) => open.has(key(session.token?.id ?? session.signInId ?? '', actor))));
 }
 
 /** The session of the page being rendered, or null. */

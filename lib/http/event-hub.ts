@@ -1,6 +1,6 @@
 import 'server-only';
 import { may, type Actor } from '../auth/policies';
-import { holds, type Session } from '../auth/session';
+import { stillIn, type LetIn } from '../auth/session';
 import { EVERY_CELLAR, type Change } from '../contracts/events';
 import { logFor } from '../log';
 import { hearChanges } from '../services/changes';
@@ -8,8 +8,8 @@ import { databaseIsAway } from './problem';
 
 /** So that a line through proxies stays open, and a browser sees that it is dead. */
 const BEAT_MS = 15_000;
-/** Should the word that a sign-in or membership has ended be lost, its stream ends within this. */
-const RECHECK_MS = 30_000;
+/** A sign-in runs out, or lies unused for too long, without a word: its stream ends within this. */
+const RECHECK_MS = 5_000;
 /** A reader that has not taken this many messages is gone or hostile. */
 const MOST_BEHIND = 256;
 const RECONNECT_MS = 2_000;
@@ -17,9 +17,7 @@ const RECONNECT_MS = 2_000;
 const log = logFor('events');
 const encoder = new TextEncoder();
 
-interface Stream {
-  actor: Actor;
-  session: Pick<Session, 'signInId' | 'token'>;
+interface Stream extends LetIn {
   controller: ReadableStreamDefaultController<Uint8Array>;
 }
 
@@ -100,7 +98,9 @@ class EventHub {
   /** Ends the streams whose sign-in or membership has ended; a database that does not answer ends none. */
   private async recheck(which: (stream: Stream) => boolean = () => true): Promise<void> {
     try {
-      for (const stream of [...this.streams].filter(which)) if (!(await holds(stream.session, stream.actor))) this.drop(stream);
+      const asked = [...this.streams].filter(which);
+      const open = await stillIn(asked);
+      for (const stream of asked) if (!open.has(stream)) this.drop(stream);
     } catch (error) {
       if (!databaseIsAway(error)) log.error({ err: error }, 'could not check a sign-in');
     }

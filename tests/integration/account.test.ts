@@ -1,9 +1,7 @@
 import { TOTP } from 'otpauth';
-import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import { beforeEach, describe, expect, it } from 'vitest';
 import { AccountLink, AuditRow, Cellar, Entry, Person, RecoveryCode, SignIn } from '@/db/models';
-import { hashPassword } from '@/lib/auth/passwords';
-import type { Actor } from '@/lib/auth/policies';
-import { ManualClock } from '@/lib/clock';
+import type { ManualClock } from '@/lib/clock';
 import { ConflictError, InvalidError, NotFoundError, ThrottledError } from '@/lib/errors';
 import { createCellar } from '@/lib/services/cellars/own';
 import { handOver } from '@/lib/services/cellars/members';
@@ -17,48 +15,26 @@ import { changePassphrase, resetPassphrase } from '@/lib/services/people/passphr
 import { beginSecondFactor, confirmSecondFactor, endSecondFactor, renewRecoveryCodes } from '@/lib/services/people/second-factor';
 import { signIn } from '@/lib/services/people/sign-in';
 import { signInByLink } from '@/lib/services/people/sign-in-by-link';
+import { from, member, opened, OTHER, PASS, useMail } from '../support/account';
 import { useDatabase } from '../support/database';
-import { buildBatch, buildEntry, buildMember } from '../support/factories';
+import { buildBatch, buildEntry } from '../support/factories';
 import { post, secretIn } from '../support/letters';
-import { startMailServer, type MailServer } from '../support/mail-server';
 
 const db = useDatabase();
-const PASS = 'a lantern by the door';
-const OTHER = 'nine wet corks in a row';
 const DAY = 86_400_000;
 const MINUTE = 60_000;
 
-let server: MailServer;
+const mail = useMail(db);
 let clock: ManualClock;
-beforeAll(async () => {
-  server = await startMailServer();
-});
-afterAll(() => server.stop());
-beforeEach(async () => {
-  // What earlier tests owe is not this one's; their counts are not either.
-  await db.sequelize.query('delete from letters; delete from sign_in_tries');
-  // Well ahead of the database’s own clock, which stamps when a letter was owed.
-  clock = new ManualClock(Date.now() + 300_000);
+beforeEach(() => {
+  clock = mail.clock;
 });
 
-let hash: Promise<string> | undefined;
-/** A member who can show a passphrase. */
-async function member(role: Actor['role'] = 'keeper', cellarId?: string) {
-  const made = await buildMember(role, cellarId === undefined ? {} : { cellarId });
-  await made.person.update({ passwordHash: await (hash ??= hashPassword(PASS)) });
-  return made;
-}
-
-const from = (previous: string | null = null) => ({ address: '192.0.2.7', userAgent: 'test', previous });
-const opened = (outcome: Awaited<ReturnType<typeof signIn>>) => {
-  if (typeof outcome === 'string') throw new Error(`not signed in: ${outcome}`);
-  return outcome;
-};
 
 describe('a link by mail', () => {
   const ask = async (kind: 'sign-in' | 'password', email: string) => {
     await askForLink(kind, email, clock);
-    return post(server, clock);
+    return post(mail.server, clock);
   };
 
   it('signs in once, within ten minutes', async () => {
@@ -83,7 +59,7 @@ describe('a link by mail', () => {
     };
     expect(await rows('nobody@loft.example')).toEqual([1, 1, 1]);
     expect(await rows(person.email)).toEqual([1, 1, 1]);
-    expect((await post(server, clock)).map(({ to }) => to)).toEqual([[person.email]]);
+    expect((await post(mail.server, clock)).map(({ to }) => to)).toEqual([[person.email]]);
   });
 
   it('does not flood a mailbox: after four asked for, the next has to wait, known or not', async () => {
@@ -106,7 +82,7 @@ describe('a link by mail', () => {
     expect(await signInByLink({ token: signInToken }, from(), clock.now())).toBe('refused');
     expect(await signIn({ email: person.email, password: PASS }, false, from(), clock.now())).toBe('refused');
     expect(opened(await signIn({ email: person.email, password: OTHER }, false, from(), clock.now())).personId).toBe(person.id);
-    expect((await post(server, clock)).map(({ subject }) => subject)).toEqual(['Your passphrase was changed']);
+    expect((await post(mail.server, clock)).map(({ subject }) => subject)).toEqual(['Your passphrase was changed']);
   });
 
   it('of one kind does not do what another kind does', async () => {
@@ -143,7 +119,7 @@ describe('the passphrase and the address', () => {
       const { person } = await member('hand');
       const wanted = `moved-${person.id}@loft.example`;
       await askForMailChange(person.id, { email: wanted, passphrase: PASS }, clock);
-      const letters = await post(server, clock);
+      const letters = await post(mail.server, clock);
       expect(letters.map(({ to }) => to[0]).sort()).toEqual([person.email, wanted].sort());
       const tokens = letters.map(secretIn);
       expect(await confirmMailChange(tokens[order[0]]!, clock)).toMatchObject({ changed: false });
@@ -151,7 +127,7 @@ describe('the passphrase and the address', () => {
       expect(await confirmMailChange(tokens[order[1]]!, clock)).toEqual({ changed: true, waits_for: null });
       expect((await Person.findByPk(person.id))?.email).toBe(wanted);
       // The old address is told.
-      expect((await post(server, clock)).map(({ to, subject }) => [to[0], subject])).toEqual([[person.email, 'Your mail address was changed']]);
+      expect((await post(mail.server, clock)).map(({ to, subject }) => [to[0], subject])).toEqual([[person.email, 'Your mail address was changed']]);
       await expect(confirmMailChange(tokens[0]!, clock)).rejects.toThrow(NotFoundError);
     }
   });
@@ -161,7 +137,7 @@ describe('the passphrase and the address', () => {
     const other = await member('hand');
     const begin = async (email: string) => {
       await askForMailChange(person.id, { email, passphrase: PASS }, clock);
-      return (await post(server, clock)).map(secretIn);
+      return (await post(mail.server, clock)).map(secretIn);
     };
     const [first] = await begin('one@loft.example');
     expect(await confirmMailChange(first!, clock)).toMatchObject({ changed: false });
@@ -209,12 +185,12 @@ describe('the second factor', () => {
     const { person } = await member('brewer');
     const code = await authenticator(person.id);
     const { recovery_codes } = await confirmSecondFactor(person.id, code(), clock);
-    await post(server, clock);
+    await post(mail.server, clock);
     const recovery = recovery_codes[0]!.replace('-', '');
     const form = { email: person.email, password: PASS, code: recovery };
     opened(await signIn(form, false, from(), clock.now()));
     expect(await signIn(form, false, from(), clock.now())).toBe('code-wrong');
-    expect((await post(server, clock)).map(({ subject }) => subject)).toEqual(['A recovery code was used']);
+    expect((await post(mail.server, clock)).map(({ subject }) => subject)).toEqual(['A recovery code was used']);
     const rows = await RecoveryCode.findAll({ where: { personId: person.id } });
     expect(rows.some((row) => row.codeHash.toString('latin1').includes(recovery))).toBe(false);
     clock.advance(60_000);
@@ -227,9 +203,9 @@ describe('the second factor', () => {
     const { person } = await member('brewer');
     const code = await authenticator(person.id);
     await confirmSecondFactor(person.id, code(), clock);
-    await post(server, clock);
+    await post(mail.server, clock);
     await askForLink('sign-in', person.email, clock);
-    const token = secretIn((await post(server, clock))[0]);
+    const token = secretIn((await post(mail.server, clock))[0]);
     clock.advance(60_000);
     expect(await signInByLink({ token }, from(), clock.now())).toBe('code-needed');
     expect(await signInByLink({ token, code: '123456' === code() ? '654321' : '123456' }, from(), clock.now())).toBe('code-wrong');
@@ -306,12 +282,12 @@ describe('one’s own data', () => {
     await handOver(keeper, hand.personId, PASS, clock);
     await expect(deleteAccount(keeper.personId, { ...form, passphrase: 'no' }, clock)).rejects.toThrow(InvalidError);
     await expect(deleteAccount(keeper.personId, { ...form, email: 'other@loft.example' }, clock)).rejects.toThrow(InvalidError);
-    await post(server, clock);
+    await post(mail.server, clock);
     await deleteAccount(keeper.personId, form, clock);
     expect(await Person.findByPk(keeper.personId)).toBeNull();
     expect(await Cellar.findByPk(alone)).toBeNull();
     expect(await Cellar.findByPk(keeper.cellarId)).not.toBeNull();
     expect(await Entry.findByPk(entry.id)).toMatchObject({ personId: null, text: 'x' });
-    expect((await post(server, clock)).map(({ to, subject }) => [to[0], subject])).toEqual([[keeper.person.email, 'Your account was deleted']]);
+    expect((await post(mail.server, clock)).map(({ to, subject }) => [to[0], subject])).toEqual([[keeper.person.email, 'Your account was deleted']]);
   });
 });

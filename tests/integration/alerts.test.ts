@@ -8,6 +8,7 @@ import { acknowledgeAlert } from '@/lib/services/alerts/acknowledge';
 import { evaluateAlerts } from '@/lib/services/alerts/evaluate';
 import { listAlerts } from '@/lib/services/alerts/list';
 import { resolveAlert } from '@/lib/services/alerts/resolve';
+import { changeRole, removeMember } from '@/lib/services/cellars/members';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildCellar, buildMember } from '../support/factories';
 import { assessmentWith, callWith } from '../unit/alerts/assessments';
@@ -140,6 +141,31 @@ describe('taking it in hand', () => {
     await h.stalled();
     await h.stalled();
     expect((await h.mails()).slice(2)).toMatchObject([{ personId: h.hand.personId, payload: { event: 'look_again' } }]);
+  });
+
+  it('is open again when whoever has it leaves the cellar, and the others are told', async () => {
+    await h.stalled();
+    const [alert] = (await list(h.keeper)).items;
+    await acknowledgeAlert(h.hand, alert!.id, { note: 'Mine.', look_again_at: new Date(START + 3 * HOUR).toISOString() }, { clock: h.clock });
+    h.clock.advance(HOUR);
+    await removeMember(h.keeper, h.hand.personId, h.clock);
+    expect((await list(h.keeper)).items).toMatchObject([{ id: alert!.id, state: 'open', acknowledged_by: null, look_again_at: null, note: 'Mine.' }]);
+    const told = (await h.mails()).filter((mail) => mail.dedupeKey.includes(':released-'));
+    expect(told).toMatchObject([{ personId: h.keeper.personId }]);
+    // Nobody has it: it is said again after a day, as one that nobody took.
+    h.clock.advance(24 * HOUR);
+    await h.stalled();
+    expect((await h.mails()).filter((mail) => mail.dedupeKey.includes(':repeated-')).map((mail) => mail.personId)).toContain(h.keeper.personId);
+  });
+
+  it('is open again when whoever has it may only look from now on, and stays in hand through any other change of role', async () => {
+    await h.stalled();
+    const [alert] = (await list(h.keeper)).items;
+    await acknowledgeAlert(h.hand, alert!.id, { note: null, look_again_at: null }, { clock: h.clock });
+    await changeRole(h.keeper, h.hand.personId, 'brewer', h.clock);
+    expect((await list(h.keeper)).items).toMatchObject([{ state: 'acknowledged' }]);
+    await changeRole(h.keeper, h.hand.personId, 'guest', h.clock);
+    expect((await list(h.keeper)).items).toMatchObject([{ state: 'open', acknowledged_by: null }]);
   });
 
   it('can be taken over by somebody else', async () => {

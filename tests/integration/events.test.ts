@@ -5,6 +5,7 @@ import { changeSchema, type Change } from '@/lib/contracts/events';
 import { notifyChange } from '@/lib/services/changes';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildMember } from '../support/factories';
+import { buildToken } from '../support/people-rows';
 import { until } from '../support/processes';
 import { call, sessionCookie, startWeb, type Web } from '../support/web';
 
@@ -119,6 +120,27 @@ describe('live events', () => {
     expect(pages[2]!.closed).toBe(false);
     pages[2]!.end();
   }, 90_000);
+
+  it('ends the stream within seconds of a sign-in that runs out, or has lain unused too long, though nobody says a word', async () => {
+    const [expired, idle, kept] = [await buildMember('hand'), await buildMember('hand'), await buildMember('hand')];
+    const [runsOut, liesUnused, stays] = [await sessionCookie(expired.personId), await sessionCookie(idle.personId), await sessionCookie(kept.personId)];
+    const pages = [await listening(runsOut.cookie), await listening(liesUnused.cookie), await listening(stays.cookie)];
+    await db.sequelize.query(`update sign_ins set expires_at = now() where id = '${runsOut.signInId}'`);
+    await db.sequelize.query(`update sign_ins set last_seen_at = now() - make_interval(secs => idle_s + 1) where id = '${liesUnused.signInId}'`);
+    await until('both streams to end', () => pages[0]!.closed && pages[1]!.closed, 8_000);
+    await say({ cellar: kept.cellarId, kind: 'reading', batch: null });
+    await until('the one that is still signed in to hear', () => pages[2]!.changes.length === 1);
+    pages[2]!.end();
+  });
+
+  it('ends a program’s stream within seconds of its token running out', async () => {
+    const member = await buildMember('hand');
+    const { id, token } = await buildToken(member.personId, member.cellarId, 'hand');
+    const page = await listening(undefined, { authorization: `Bearer ${token}` });
+    expect(page.status).toBe(200);
+    await db.sequelize.query(`update api_tokens set expires_at = now() where id = '${id}'`);
+    await until('the stream to end', () => page.closed, 8_000);
+  });
 
   it('ends streams when the line to the database breaks, so that pages ask again, and hears anew after', async () => {
     const member = await buildMember('hand');

@@ -1,8 +1,7 @@
-import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import { beforeEach, describe, expect, it } from 'vitest';
 import { ApiToken, Cellar, Entry, Invitation, Membership, Person } from '@/db/models';
-import { hashPassword } from '@/lib/auth/passwords';
 import type { Actor } from '@/lib/auth/policies';
-import { ManualClock } from '@/lib/clock';
+import type { ManualClock } from '@/lib/clock';
 import { createInvitation as invitationForm, createToken as tokenForm } from '@/lib/contracts/people';
 import { ConflictError, ForbiddenError, InvalidError, NotFoundError, ThrottledError } from '@/lib/errors';
 import { createCellar, deleteCellar } from '@/lib/services/cellars/own';
@@ -11,50 +10,28 @@ import { acceptInvitation, joinByInvitation, lookAtInvitation } from '@/lib/serv
 import { createInvitation, listInvitations, revokeInvitation } from '@/lib/services/invitations/manage';
 import { signIn } from '@/lib/services/people/sign-in';
 import { createToken, listTokens, revokeToken } from '@/lib/services/tokens/manage';
+import { from, member, opened, OTHER, PASS, useMail } from '../support/account';
 import { useDatabase } from '../support/database';
-import { buildBatch, buildEntry, buildMember, buildSensor, writeReadings } from '../support/factories';
+import { buildBatch, buildEntry, buildSensor, writeReadings } from '../support/factories';
 import { post, secretIn } from '../support/letters';
-import { startMailServer, type MailServer } from '../support/mail-server';
 
 const db = useDatabase();
-const PASS = 'a lantern by the door';
-const OTHER = 'nine wet corks in a row';
 const DAY = 86_400_000;
 
-let server: MailServer;
+const mail = useMail(db);
 let clock: ManualClock;
-beforeAll(async () => {
-  server = await startMailServer();
+beforeEach(() => {
+  clock = mail.clock;
 });
-afterAll(() => server.stop());
-beforeEach(async () => {
-  // What earlier tests owe is not this one's; their counts are not either.
-  await db.sequelize.query('delete from letters; delete from sign_in_tries');
-  // Well ahead of the database’s own clock, which stamps when a letter was owed.
-  clock = new ManualClock(Date.now() + 300_000);
-});
-
-let hash: Promise<string> | undefined;
-/** A member who can show a passphrase. */
-async function member(role: Actor['role'] = 'keeper', cellarId?: string) {
-  const made = await buildMember(role, cellarId === undefined ? {} : { cellarId });
-  await made.person.update({ passwordHash: await (hash ??= hashPassword(PASS)) });
-  return made;
-}
 
 const invitation = (email: string, role: Actor['role'] = 'hand') => invitationForm.parse({ email, role });
-const from = (previous: string | null = null) => ({ address: '192.0.2.7', userAgent: 'test', previous });
-const opened = (outcome: Awaited<ReturnType<typeof signIn>>) => {
-  if (typeof outcome === 'string') throw new Error(`not signed in: ${outcome}`);
-  return outcome;
-};
 
 describe('an invitation', () => {
   it('goes by mail, shows what it offers, and lets somebody new in once', async () => {
     const keeper = await member();
     const made = await createInvitation(keeper, invitation('Newcomer@Loft.example'), clock);
     expect(made).toMatchObject({ email: 'newcomer@loft.example', role: 'hand', state: 'open', mail: 'waiting' });
-    const [letter] = await post(server, clock);
+    const [letter] = await post(mail.server, clock);
     expect(letter!.to).toEqual(['newcomer@loft.example']);
     expect(letter!.text).toContain('It works once.');
     const token = secretIn(letter);
@@ -72,7 +49,7 @@ describe('an invitation', () => {
   it('is accepted by an account that is signed in, with the role it was made for', async () => {
     const [keeper, guest] = [await member(), await member('guest')];
     await createInvitation(keeper, invitation('second-address@loft.example', 'brewer'), clock);
-    const [letter] = await post(server, clock);
+    const [letter] = await post(mail.server, clock);
     expect(await acceptInvitation(guest.personId, secretIn(letter), clock)).toEqual({ id: keeper.cellarId });
     expect(await Membership.findOne({ where: { personId: guest.personId, cellarId: keeper.cellarId } })).toMatchObject({ role: 'brewer' });
     await expect(acceptInvitation((await member('guest')).personId, secretIn(letter), clock)).rejects.toThrow(NotFoundError);
@@ -82,7 +59,7 @@ describe('an invitation', () => {
     const keeper = await member();
     const token = async (email: string) => {
       const { id } = await createInvitation(keeper, invitation(email), clock);
-      return { id, token: secretIn((await post(server, clock))[0]) };
+      return { id, token: secretIn((await post(mail.server, clock))[0]) };
     };
     const [revoked, expired, older] = [await token('a@loft.example'), await token('b@loft.example'), await token('c@loft.example')];
     await revokeInvitation(keeper, revoked.id, clock);
@@ -103,7 +80,7 @@ describe('an invitation', () => {
     const keeper = await member();
     const { id } = await createInvitation(keeper, invitation('soon@loft.example'), clock);
     await revokeInvitation(keeper, id, clock);
-    expect(await post(server, clock)).toEqual([]);
+    expect(await post(mail.server, clock)).toEqual([]);
   });
 
   it('is for keepers to send and take back, of their own cellar', async () => {
@@ -148,7 +125,7 @@ describe('who shares a cellar', () => {
     await removeMember(keeper, brewer.personId, clock);
     expect((await ApiToken.findByPk(token.id))?.revokedAt).not.toBeNull();
     expect(await Entry.findByPk(entry.id)).toMatchObject({ personId: brewer.personId, text: 'x' });
-    expect((await post(server, clock)).map(({ to, subject }) => [to[0], subject])).toEqual([[brewer.person.email, expect.stringContaining('no longer share')]]);
+    expect((await post(mail.server, clock)).map(({ to, subject }) => [to[0], subject])).toEqual([[brewer.person.email, expect.stringContaining('no longer share')]]);
     await expect(removeMember(keeper, brewer.personId, clock)).rejects.toThrow(NotFoundError);
   });
 

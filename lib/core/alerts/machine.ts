@@ -25,6 +25,8 @@ export type Look =
   | { type: 'silence' }
   /** A person has it in hand; `lookAgainAt` is when they will look again. */
   | { type: 'take'; lookAgainAt: Instant | null }
+  /** Whoever had it in hand is gone: it is nobody's again. */
+  | { type: 'release' }
   /** A person says that it was no fault, or that it is done. */
   | { type: 'clear' }
   /** The batch is over, and with it everything that could be said of it. */
@@ -89,6 +91,9 @@ export function step(timing: Timing, state: AlertState, look: Look, now: Instant
       return stepSilence(state, now);
     case 'take':
       return isUp(state) ? { state: { ...state, inHand: { lookAgainAt: look.lookAgainAt } }, events: [{ type: 'taken' }] } : { state, events: [] };
+    case 'release':
+      // Told of now by whoever releases it: the next repeat counts from here.
+      return { state: isUp(state) && state.inHand ? { ...state, inHand: null, toldAt: now } : state, events: [] };
     case 'clear':
       return isUp(state)
         ? { state: { phase: 'dismissed', goneSince: state.phase === 'keeping' ? state.goneSince : null, openedAt: state.openedAt }, events: [{ type: 'resolved', by: 'person' }] }

@@ -1,11 +1,12 @@
 import { inTransaction } from '@/db/client';
 import { Person } from '@/db/models';
 import { authorize } from '@/lib/auth/authorize';
-import type { Actor } from '@/lib/auth/policies';
+import { may, type Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
 import type { MemberBody } from '@/lib/contracts/people';
 import type { Role } from '@/lib/core/roles';
 import { ConflictError } from '@/lib/errors';
+import { releaseAlerts } from '../alerts/release';
 import { auditBy } from '../audit/write';
 import { notifyAccess } from '../changes';
 import { iso } from '../iso';
@@ -15,7 +16,7 @@ import { endMembership } from './end-membership';
 import { lockCellar, memberOf, requireAnotherKeeper } from './keepers';
 
 /** Changes a member's role; open streams of the old one end at once. @throws ConflictError for the last keeper. */
-export async function changeRole(actor: Actor, personId: string, role: Role): Promise<MemberBody> {
+export async function changeRole(actor: Actor, personId: string, role: Role, clock: Clock = systemClock): Promise<MemberBody> {
   authorize(actor, 'members.manage');
   return inTransaction(async (transaction) => {
     await lockCellar(actor.cellarId, transaction);
@@ -23,6 +24,7 @@ export async function changeRole(actor: Actor, personId: string, role: Role): Pr
     const before = member.role;
     if (role !== 'keeper') await requireAnotherKeeper(member, transaction);
     await member.update({ role }, { transaction });
+    if (!may(role, 'alerts.acknowledge')) await releaseAlerts(actor.cellarId, personId, clock.now(), transaction);
     await auditBy(actor, 'member.role-changed', personId, { from: before, to: role }, transaction);
     await notifyAccess(actor.cellarId, personId, transaction);
     const { id, name, email } = await Person.findByPk(personId, { transaction, rejectOnEmpty: true });
