@@ -261,6 +261,13 @@ worker.addEventListener('push', (/** @type {any} */ event) => {
   );
 });
 
+/** A page of this house, whatever was said. @param {unknown} url */
+function insideOf(url) {
+  const { origin } = self.location;
+  const wanted = typeof url === 'string' && URL.canParse(url, origin) ? new URL(url, origin) : null;
+  return wanted?.origin === origin ? wanted.href : `${origin}/alerts`;
+}
+
 worker.addEventListener('notificationclick', (/** @type {any} */ event) => {
   event.notification.close();
   const { url, alert } = event.notification.data ?? {};
@@ -270,7 +277,7 @@ worker.addEventListener('notificationclick', (/** @type {any} */ event) => {
         const taken = await fetch(`/api/v1/alerts/${encodeURIComponent(alert)}/acknowledge`, { method: 'POST', headers: { 'content-type': 'application/json' }, body: '{}' }).catch(() => null);
         if (taken?.ok) return;
       }
-      const target = new URL(typeof url === 'string' && url.startsWith('/') ? url : '/alerts', self.location.origin).href;
+      const target = insideOf(url);
       const [open] = await worker.clients.matchAll({ type: 'window', includeUncontrolled: true });
       if (!open) return worker.clients.openWindow(target);
       await open.focus();

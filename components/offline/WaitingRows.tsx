@@ -6,11 +6,11 @@ import { logTime } from '@/components/batch/log';
 import { Button } from '@/components/ui/Button';
 import { Sentence } from '@/components/ui/Sentence';
 import { sendUnsent } from '@/lib/client/unsent/send';
-import { dropUnsent, setUnsent, type Unsent } from '@/lib/client/unsent/store';
+import { dropUnsent, isUnsentEntry, setUnsent, type UnsentEntry } from '@/lib/client/unsent/store';
 import { useUnsent } from '@/lib/client/unsent/use-unsent';
 import { unsentRow } from './words';
 
-function Row({ entry, now, timeZone }: { entry: Unsent; now: number; timeZone: string }) {
+function Row({ entry, now, timeZone }: { entry: UnsentEntry; now: number; timeZone: string }) {
   const [sure, setSure] = useState(false);
   const { kind, at, text, own, figure } = unsentRow(entry);
   const refused = entry.state === 'refused';
@@ -59,7 +59,7 @@ function Row({ entry, now, timeZone }: { entry: Unsent; now: number; timeZone: s
 
 /** At the head of a log: what was written here and has not left this device yet, newest first. */
 export function WaitingRows({ batchId, now, timeZone }: { batchId: string; now: number; timeZone: string }) {
-  const entries = useUnsent(batchId);
+  const entries = useUnsent().filter(isUnsentEntry).filter((entry) => entry.batchId === batchId);
   if (entries.length === 0) return null;
   return (
     <ol aria-label="Waiting to be sent">

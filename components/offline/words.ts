@@ -4,7 +4,7 @@ import type { LogKind } from '@/components/batch/log';
 import { gravityText } from '@/components/batch/figures';
 import type { EntryBody } from '@/lib/contracts/batches';
 import type { Stopped } from '@/lib/client/unsent/send';
-import type { Unsent } from '@/lib/client/unsent/store';
+import type { Unsent, UnsentEntry } from '@/lib/client/unsent/store';
 
 /** What is this new needs no word while the line is up. */
 const SLOW_MS = 90_000;
@@ -36,7 +36,7 @@ interface BarFacts {
 export function barWords({ offlineSince, keptSince, waiting, refused, stopped, now, timeZone }: BarFacts): BarWords | null {
   const wait = waiting > 0 ? ` ${notes(waiting)} to be sent.` : '';
   const asOf = keptSince === null ? null : when(keptSince / 1000, now / 1000, timeZone);
-  const about = refused[0] ? { href: `/batches/${refused[0].batchId}`, word: 'Look at it' } : null;
+  const about = refused[0] ? { href: refused[0].batchId === null ? '/rounds' : `/batches/${refused[0].batchId}`, word: 'Look at it' } : null;
   const no = refused.length === 0 ? '' : ` ${refused.length === 1 ? '1 note was' : `${refused.length} notes were`} not taken.`;
   if (offlineSince !== null) {
     const strong = asOf === null ? `Offline since ${clock(offlineSince / 1000, timeZone)}.` : `Offline. Shown as of ${asOf}.`;
@@ -49,7 +49,7 @@ export function barWords({ offlineSince, keptSince, waiting, refused, stopped, n
 }
 
 /** An entry that waits, as the log shows one. */
-export function unsentRow({ input }: Pick<Unsent, 'input'>): { kind: LogKind; at: number; text: string; own: string | null; figure: string | null } {
+export function unsentRow({ input }: Pick<UnsentEntry, 'input'>): { kind: LogKind; at: number; text: string; own: string | null; figure: string | null } {
   const entry = {
     kind: input.kind,
     text: input.text ?? null,

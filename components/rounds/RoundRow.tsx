@@ -85,7 +85,7 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
   }
 
   return (
-    <li className={`break-inside-avoid border-b px-(--margin) py-2 strip:flex strip:items-center strip:gap-6 print:px-0 print:py-0.5 ${row.late && !done ? 'bg-lit' : ''}`}>
+    <li className={`break-inside-avoid border-b px-(--margin) py-2 strip:flex strip:items-center strip:gap-6 print:py-0.5 ${row.late && !done ? 'bg-lit' : ''}`}>
       <div className="flex min-w-0 items-start gap-3 strip:flex-1">
         <Box ticked={done} disabled={!mayDo} label={done ? `Take back: ${job.title}` : `Done: ${job.title}`} onTick={(on) => (on ? ticks.tick(job) : ticks.untick(job))} className="min-h-11 min-w-9 pt-3 print:min-h-0! print:pt-1.5" />
         <div className="min-w-0 flex-1 py-1">

@@ -73,9 +73,9 @@ function JobWho({ row, ticks, mayDo }: { row: TodayJob; ticks: Ticks; mayDo: boo
   if (ticks.ticked.has(job.id)) {
     return (
       <p role="status" className="type-label text-ink2">
-        {ticks.saved.has(job.id) ? (
+        {ticks.saved.has(job.id) || ticks.waiting.has(job.id) ? (
           <>
-            done.{' '}
+            {ticks.saved.has(job.id) ? 'done.' : 'done, waits to be sent.'}{' '}
             <button type="button" className="underline underline-offset-2" onClick={() => ticks.untick(job)}>
               take it back
             </button>
@@ -179,8 +179,8 @@ export function PhoneToday({ jobs, ticks, nothing, mayDo, loading }: TodayProps)
               </div>
             </div>
             {done ? (
-              <Button disabled={!ticks.saved.has(job.id)} onClick={() => ticks.untick(job)}>
-                {ticks.saved.has(job.id) ? 'Take it back' : 'Saving'}
+              <Button disabled={!ticks.saved.has(job.id) && !ticks.waiting.has(job.id)} onClick={() => ticks.untick(job)}>
+                {ticks.saved.has(job.id) || ticks.waiting.has(job.id) ? 'Take it back' : 'Saving'}
               </Button>
             ) : job.taken_by ? (
               <span className="type-label text-ink2">{firstName(job.taken_by.name)} has it</span>

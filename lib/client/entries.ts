@@ -4,7 +4,7 @@ import type { z } from 'zod';
 import type { EntryBody, entryList, RevisionList, UpdateEntry } from '../contracts/batches';
 import { isOfBatch } from './batches';
 import { sendJson, withQuery } from './fetcher';
-import { sendOrKeep } from './unsent/send';
+import { sendOrKeepEntry } from './unsent/send';
 import type { NewEntry } from './unsent/store';
 import { isPath, refresh, useResource } from './use-resource';
 
@@ -24,7 +24,7 @@ const refreshBatch = (batchId: string) => refresh((path) => isOfBatch(batchId)(p
  * later: null then.
  */
 export async function createEntry(batchId: string, input: NewEntry): Promise<EntryBody | null> {
-  const logged = await sendOrKeep(batchId, { ...input, client_id: input.client_id ?? crypto.randomUUID() });
+  const logged = await sendOrKeepEntry(batchId, { ...input, client_id: input.client_id ?? crypto.randomUUID() });
   if (!('sent' in logged)) return null;
   await refreshBatch(batchId);
   return logged.sent;

@@ -3,6 +3,7 @@
 import type { z } from 'zod';
 import type { CalendarBody, createJob as createSchema, JOB_STATES, JobBody, JobList, UpdateJob } from '../contracts/jobs';
 import { sendJson, withQuery } from './fetcher';
+import { sendOrKeepAct, type Sent } from './unsent/send';
 import { isPath, refresh, useResource } from './use-resource';
 
 /** The rounds. `until` keeps to what is due by then; null waits. */
@@ -19,11 +20,12 @@ async function changed<T>(answer: T): Promise<T> {
 export const createJob = async (input: z.input<typeof createSchema>) => changed(await sendJson<JobBody>('POST', '/jobs', input));
 export const updateJob = async (id: string, input: UpdateJob) => changed(await sendJson<JobBody>('PATCH', `/jobs/${id}`, input));
 export const dropJob = async (id: string) => changed(await sendJson<null>('DELETE', `/jobs/${id}`));
-export const doJob = async (id: string) => changed(await sendJson<JobBody>('POST', `/jobs/${id}/done`));
+/** Ticks a job as of now; away from the network it is kept on this device and sent later. */
+export const doJob = async (job: JobBody): Promise<Sent<JobBody>> => changed(await sendOrKeepAct(job, { does: 'done', at: new Date().toISOString() }));
 /** Within ten seconds of the tick. */
 export const undoJob = async (id: string) => changed(await sendJson<JobBody>('POST', `/jobs/${id}/undo`));
 export const takeJob = async (id: string, taken = true) => changed(await sendJson<JobBody>('POST', `/jobs/${id}/take`, { taken }));
-export const snoozeJob = async (id: string, until: string) => changed(await sendJson<JobBody>('POST', `/jobs/${id}/snooze`, { until }));
+export const snoozeJob = async (job: JobBody, until: string): Promise<Sent<JobBody>> => changed(await sendOrKeepAct(job, { does: 'snooze', until }));
 
 /** The person's own calendar address of the rounds. */
 export function useCalendar() {

@@ -4,7 +4,7 @@ import { catalogueForm, catalogueItem, catalogueSchema } from './catalogue';
 import { id } from './common';
 import { byId, endpoint } from './endpoint';
 import { blendForm, blendResult, drinkSchema, familySchema, finingForm, finingList, finingSchema, movedSchema, rackForm, secondDoseForm, splitForm, splitResult, topUpBatchForm } from './family';
-import { calendarSchema, createJob, jobList, jobQuery, jobSchema, linkToken, snoozeJob, takeJob, updateJob } from './jobs';
+import { calendarSchema, createJob, doneJob, jobList, jobQuery, jobSchema, linkToken, snoozeJob, takeJob, updateJob } from './jobs';
 import { batchProposal, copyMust, createMust, mustList, mustQuery, mustResultSchema, mustSchema, proposalQuery, reckonedMust, reckonMustForm, scaleMustForm, solveMustForm, updateMust, versionQuery } from './musts';
 
 /** What comes before the bottle: must sheets, the work in the cellar, the rounds. */
@@ -41,7 +41,7 @@ export const endpointsBefore = {
   createJob: endpoint({ method: 'POST', path: '/jobs', summary: 'Put a job on the rounds', access: 'jobs.do', body: createJob, response: jobSchema, status: 201 }),
   updateJob: endpoint({ method: 'PATCH', path: '/jobs/{id}', summary: 'Change a job', access: 'jobs.do', params: byId, body: updateJob, response: jobSchema, status: 200 }),
   dropJob: endpoint({ method: 'DELETE', path: '/jobs/{id}', summary: 'Take a job off the rounds', access: 'jobs.do', params: byId, response: null, status: 204 }),
-  doJob: endpoint({ method: 'POST', path: '/jobs/{id}/done', summary: 'Tick a job', access: 'jobs.do', params: byId, response: jobSchema, status: 200 }),
+  doJob: endpoint({ method: 'POST', path: '/jobs/{id}/done', summary: 'Tick a job', access: 'jobs.do', params: byId, body: doneJob, response: jobSchema, status: 200 }),
   undoJob: endpoint({ method: 'POST', path: '/jobs/{id}/undo', summary: 'Take a tick back, within ten seconds', access: 'jobs.do', params: byId, response: jobSchema, status: 200 }),
   takeJob: endpoint({ method: 'POST', path: '/jobs/{id}/take', summary: 'Take a job in hand, or leave it to others', access: 'jobs.do', params: byId, body: takeJob, response: jobSchema, status: 200 }),
   snoozeJob: endpoint({ method: 'POST', path: '/jobs/{id}/snooze', summary: 'Put a job off', access: 'jobs.do', params: byId, body: snoozeJob, response: jobSchema, status: 200 }),

@@ -73,6 +73,8 @@ export type CreateJob = z.infer<typeof createJob>;
 export const updateJob = z.object({ title: line(120).optional(), note: text(1000).nullable().optional(), due_at: timestamp.optional(), exact: z.boolean().optional(), repeat_days: days.nullable().optional() });
 export type UpdateJob = z.infer<typeof updateJob>;
 
+/** `at`: when it was done; a tick that waited for the network tells. */
+export const doneJob = z.object({ at: timestamp.optional() });
 export const takeJob = z.object({ taken: z.boolean().default(true) });
 export const snoozeJob = z.object({ until: timestamp });
 

@@ -1,7 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import type { BrowserContext, Page } from 'playwright-core';
 import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest';
-import { Batch, Entry, Membership, SignIn } from '@/db/models';
+import { Batch, Entry, Job, Membership, SignIn } from '@/db/models';
 import { expectAccessible, expectNoSidewaysScroll, useBrowser, type Visit } from '../support/browser';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildCellar, buildMember } from '../support/factories';
@@ -114,6 +114,44 @@ describe('without a network', () => {
     await waiting(page).first().waitFor({ state: 'hidden' });
     await page.getByText('First: foam has fallen.').waitFor();
     expect(await logged()).toEqual(['First: foam has fallen.', 'Second: water topped up.']);
+  });
+});
+
+describe('on the rounds without a network', () => {
+  it('ticks and what is put off are kept through a reload, can be taken back, and are sent once, as of when they were made', async () => {
+    const job = (title: string) => Job.create({ cellarId, kind: 'other', title, source: 'person', dueAt: new Date(Date.now() - 3_600_000), createdBy: wren.personId });
+    const [airlock, feed, lees] = [await job('Top up the airlock'), await job('Feed the mead'), await job('Look at the lees')];
+    const made = await visit();
+    const { page, context } = made;
+    await onTheShelf(made);
+    await page.goto(`${web.url}/rounds`);
+    await page.getByText('Look at the lees').first().waitFor();
+    await until('the kept rounds', () => holds(page, '/rounds'), 30_000);
+    await context.setOffline(true);
+    const before = Date.now();
+    await page.getByRole('button', { name: 'Done: Top up the airlock' }).click();
+    await page.getByRole('button', { name: 'Done: Feed the mead' }).click();
+    await page.getByText('Done. Waits to be sent.').nth(1).waitFor();
+    await page.getByRole('button', { name: 'Put off: Look at the lees' }).click();
+    await page.getByRole('button', { name: /tomorrow/i }).first().click();
+    await waiting(page).filter({ hasText: 'Look at the lees, put off until' }).waitFor();
+    const after = Date.now();
+    await page.reload();
+    await page.getByText('Done. Waits to be sent.').nth(1).waitFor();
+    await page.getByRole('listitem').filter({ hasText: 'Feed the mead' }).getByRole('button', { name: 'Take it back' }).click();
+    await page.getByRole('button', { name: 'Done: Feed the mead' }).waitFor();
+    await expectAccessible(page);
+    await new Promise((resolve) => setTimeout(resolve, 1_000));
+    await online(context);
+    await until('the tick', async () => (await Job.findByPk(airlock.id))?.doneAt != null, 60_000);
+    await until('what was put off', async () => (await Job.findByPk(lees.id))?.snoozedUntil != null, 60_000);
+    await waiting(page).first().waitFor({ state: 'hidden' });
+    const done = await Job.findByPk(airlock.id, { rejectOnEmpty: true });
+    expect(done.doneBy).toBe(wren.personId);
+    expect(done.doneAt!.getTime()).toBeGreaterThanOrEqual(before);
+    expect(done.doneAt!.getTime()).toBeLessThanOrEqual(after);
+    expect((await Job.findByPk(feed.id, { rejectOnEmpty: true })).doneAt).toBeNull();
+    await Job.destroy({ where: {} });
   });
 });
 

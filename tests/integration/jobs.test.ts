@@ -71,7 +71,7 @@ describe('the program’s jobs', () => {
     const batch = await buildBatch({ cellarId: hand.cellarId, name: 'Perry', pitchedAt: new Date(NOON - 5 * DAY), neck: 'blow_off' });
     await sync(batch, judged(RACK));
     const [job] = (await listJobs(hand, open, clockAt())).items;
-    await doJob(hand, job!.id, clockAt());
+    await doJob(hand, job!.id, null, clockAt());
     await sync(batch, judged(RACK), NOON + HOUR);
     expect(await titles(hand)).toEqual([]);
     await sync(batch, judged({}), NOON + 2 * HOUR);
@@ -98,7 +98,7 @@ describe('the program’s jobs', () => {
     await sync(batch, judged({}));
     const [job] = (await listJobs(hand, open, clockAt())).items;
     expect(job).toMatchObject({ kind: 'airlock', source: 'schedule' });
-    await doJob(hand, job!.id, clockAt());
+    await doJob(hand, job!.id, null, clockAt());
     await sync(batch, judged({}), NOON + HOUR);
     expect(await titles(hand)).toEqual([]);
     await sync(batch, judged({}, { lastReadingAt: NOON + 14 * DAY }), NOON + 14 * DAY);
@@ -139,16 +139,31 @@ describe('a tick', () => {
     const other = await buildMember('hand', { cellarId: hand.cellarId });
     const job = await createJob(hand, jobForm.parse({ title: 'Top up the airlocks', due_at: isoAt(NOON), repeat_days: 7 }));
     const clock = clockAt();
-    await doJob(hand, job.id, clock);
-    await doJob(hand, job.id, clock);
+    await doJob(hand, job.id, null, clock);
+    await doJob(hand, job.id, null, clock);
     expect((await listJobs(hand, open, clock)).items.map((item) => item.due_at)).toEqual([isoAt(NOON + 7 * DAY)]);
     clock.advance(9_000);
     await expect(undoJob(other, job.id, clock)).rejects.toBeInstanceOf(ForbiddenError);
     await undoJob(hand, job.id, clock);
     expect((await listJobs(hand, open, clock)).items.map((item) => item.id)).toEqual([job.id]);
-    await doJob(hand, job.id, clock);
+    await doJob(hand, job.id, null, clock);
     clock.advance(20_000);
     await expect(undoJob(hand, job.id, clock)).rejects.toBeInstanceOf(ConflictError);
+  });
+
+  it('that waited for the network counts from when it was made, never from before the job or after now', async () => {
+    const hand = await buildMember('hand');
+    const clock = clockAt(NOON + 3 * HOUR);
+    const tickedAt = async (at: number) => {
+      const job = await createJob(hand, jobForm.parse({ title: 'Top up the airlocks', due_at: isoAt(NOON + HOUR), repeat_days: 7 }), clockAt(NOON));
+      await Job.update({ createdAt: new Date(NOON) }, { where: { id: job.id } });
+      return (await doJob(hand, job.id, isoAt(at), clock)).done_at;
+    };
+    expect(await tickedAt(NOON + 2 * HOUR)).toBe(isoAt(NOON + 2 * HOUR));
+    expect(await tickedAt(NOON - DAY)).toBe(isoAt(NOON));
+    expect(await tickedAt(NOON + 9 * DAY)).toBe(isoAt(NOON + 3 * HOUR));
+    // Each comes again a week after it was done.
+    expect((await listJobs(hand, open, clock)).items.map((item) => item.due_at)).toEqual([isoAt(NOON + HOUR + 7 * DAY), isoAt(NOON + 2 * HOUR + 7 * DAY), isoAt(NOON + 3 * HOUR + 7 * DAY)]);
   });
 
   it('is snoozed into the future only', async () => {
@@ -183,7 +198,7 @@ describe('finings in two doses', () => {
     const [timer] = (await listJobs(hand, open, clock)).items;
     expect(timer).toMatchObject({ kind: 'fining_b', exact: true, due_at: isoAt(NOON + HOUR) });
     expect((await listFinings(hand, batch.id, clock)).items[0]).toMatchObject({ state: 'second_due', late_min: 4 });
-    await doJob(hand, timer!.id, clock);
+    await doJob(hand, timer!.id, null, clock);
     const doses = () => Entry.count({ where: { batchId: batch.id, kind: 'fining', removedAt: null } });
     expect(await doses()).toBe(2);
     expect((await listJobs(hand, open, clock)).items).toMatchObject([{ kind: 'settle', due_at: isoAt(clock.now() + 5 * DAY) }]);

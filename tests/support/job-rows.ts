@@ -42,7 +42,7 @@ export const jobRows: Record<Exclude<keyof typeof endpointsBefore | keyof typeof
   createJob: { may: NOT_GUESTS, good: 201, path: () => '/jobs', body: () => ({ title: 'Look', due_at: at() }) },
   updateJob: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/jobs/${t.jobId}`, body: () => ({ title: 'Look again' }) },
   dropJob: { may: NOT_GUESTS, good: 204, names: true, path: (t) => `/jobs/${t.jobId}` },
-  doJob: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/jobs/${t.jobId}/done` },
+  doJob: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/jobs/${t.jobId}/done`, body: () => ({}) },
   undoJob: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/jobs/${t.jobId}/undo` },
   takeJob: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/jobs/${t.jobId}/take`, body: () => ({}) },
   snoozeJob: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/jobs/${t.jobId}/snooze`, body: () => ({ until: isoAt(Date.now() + 3_600_000) }) },

@@ -5,7 +5,8 @@ import type { MeBody } from '../../contracts/people';
 import { isOfBatch } from '../batches';
 import { ClientError, getFresh, sendJson } from '../fetcher';
 import { isPath, refresh } from '../use-resource';
-import { addUnsent, allUnsent, dropUnsent, setUnsent, type NewEntry, type Unsent } from './store';
+import type { JobBody } from '../../contracts/jobs';
+import { addUnsent, allUnsent, dropUnsent, setUnsent, type JobAct, type NewEntry, type Task, type Unsent } from './store';
 
 /** Who writes on this page, and in which cellar. */
 export interface Writer {
@@ -26,26 +27,41 @@ const PATIENCE_MS = 12_000;
 const ABANDONED_MS = 30_000;
 const LOCK = 'fallbright-unsent';
 
-const post = (batchId: string, input: NewEntry) => sendJson<EntryBody>('POST', `/batches/${batchId}/entries`, input, AbortSignal.timeout(PATIENCE_MS));
+const postEntry = (batchId: string, input: NewEntry) => sendJson<EntryBody>('POST', `/batches/${batchId}/entries`, input, AbortSignal.timeout(PATIENCE_MS));
+const postAct = ({ id }: JobBody, act: JobAct) => (act.does === 'done' ? sendJson<JobBody>('POST', `/jobs/${id}/done`, { at: act.at }, AbortSignal.timeout(PATIENCE_MS)) : sendJson<JobBody>('POST', `/jobs/${id}/snooze`, { until: act.until }, AbortSignal.timeout(PATIENCE_MS)));
+const post = (task: Task): Promise<EntryBody | JobBody> => (task.job ? postAct(task.job, task.act) : postEntry(task.batchId, task.input));
 
 const isMine = (entry: Unsent) => writer !== null && entry.personId === writer.personId && entry.cellarId === writer.cellarId;
 
 /** The server did not say no: it was not reached, is not there, or does not know who asks. */
 const keeps = (error: unknown): boolean => error instanceof ClientError && (error.status === 0 || error.status === 401 || error.status === 408 || error.status === 429 || error.status >= 502);
 
-export type Logged = { sent: EntryBody } | { kept: true };
+export type Sent<T> = { sent: T } | { kept: true };
+
+/** @throws ClientError */
+export const sendOrKeepEntry = (batchId: string, input: NewEntry & { client_id: string }): Promise<Sent<EntryBody>> => sendOrKeep(input.client_id, { batchId, input }) as Promise<Sent<EntryBody>>;
+
+/** @throws ClientError */
+export const sendOrKeepAct = (job: JobBody, act: JobAct): Promise<Sent<JobBody>> => sendOrKeep(actId(job.id, act.does), { batchId: null, job, act }) as Promise<Sent<JobBody>>;
+
+const actId = (jobId: string, does: JobAct['does']) => `${jobId} ${does}`;
+
+/** Takes back what was done to a job and has not been sent. */
+export async function dropAct(jobId: string, does: JobAct['does']): Promise<void> {
+  const waiting = (await allUnsent()).find(({ id }) => id === actId(jobId, does));
+  if (waiting?.order !== undefined) await dropUnsent(waiting.order);
+}
 
 /**
- * Sends an entry, or keeps it on the device until it can be sent: where others
- * wait it goes behind them, so that the order of writing stays. What the server
- * refuses at once is thrown back to the form, which still holds it.
- * @throws ClientError
+ * Sends it, or keeps it on the device until it can be sent: where others wait it
+ * goes behind them, so that the order of writing stays. What the server refuses at
+ * once is thrown back to the form, which still holds it.
  */
-export async function sendOrKeep(batchId: string, input: NewEntry & { client_id: string }): Promise<Logged> {
+async function sendOrKeep(id: string, task: Task): Promise<Sent<EntryBody | JobBody>> {
   const held = writer;
-  const order = held === null ? null : await addUnsent({ id: input.client_id, ...held, batchId, input, state: 'sending', since: Date.now(), reason: null }).catch(() => null);
+  const order = held === null ? null : await addUnsent({ id, ...held, ...task, state: 'sending', since: Date.now(), reason: null }).catch(() => null);
   // No memory on this device, or nobody knows for whom: straight to the server, as ever.
-  if (order === null) return { sent: await post(batchId, input) };
+  if (order === null) return { sent: await post(task) };
   const before = (await allUnsent()).some((entry) => isMine(entry) && entry.state === 'waiting' && entry.order! < order);
   if (before) {
     await setUnsent(order, 'waiting');
@@ -53,7 +69,7 @@ export async function sendOrKeep(batchId: string, input: NewEntry & { client_id:
     return { kept: true };
   }
   try {
-    const sent = await post(batchId, input);
+    const sent = await post(task);
     await dropUnsent(order);
     return { sent };
   } catch (error) {
@@ -92,14 +108,14 @@ async function sendInOrder(): Promise<Stopped> {
   }
   for (let entry = (await allUnsent()).find(due); entry; entry = (await allUnsent()).find(due)) {
     try {
-      await post(entry.batchId, entry.input);
+      await post(entry);
       await dropUnsent(entry.order!);
     } catch (error) {
       if (keeps(error)) return error instanceof ClientError && error.status === 401 ? 'signed-out' : 'away';
       await setUnsent(entry.order!, 'refused', reasonOf(error));
     }
     const { batchId } = entry;
-    await refresh((path) => isOfBatch(batchId)(path) || isPath('/shelf')(path));
+    await refresh((path) => (batchId === null ? isPath('/jobs')(path) || isPath('/alerts')(path) : isOfBatch(batchId)(path) || isPath('/shelf')(path)));
   }
   return null;
 }

@@ -3,27 +3,37 @@
 import { openDB, type DBSchema, type IDBPDatabase } from 'idb';
 import type { z } from 'zod';
 import type { createEntry as createEntrySchema } from '../../contracts/batches';
+import type { JobBody } from '../../contracts/jobs';
 
 /** What a form sends; what it leaves out takes the schema's defaults. */
 export type NewEntry = z.input<typeof createEntrySchema>;
 
-/** A log entry that the server has not taken yet, kept on this device. */
-export interface Unsent {
+/** What was done to a job: ticked, when, or put off, until when. */
+export type JobAct = { does: 'done'; at: string } | { does: 'snooze'; until: string };
+
+/** A log entry of a batch, or something done to a job of the rounds; the job as it stood, so that it can be shown. */
+export type Task = { batchId: string; input: NewEntry; job?: undefined } | { batchId: null; job: JobBody; act: JobAct };
+
+/** Something written here that the server has not taken yet, kept on this device. */
+export type Unsent = Task & {
   /** Order of writing. */
   order?: number;
-  /** The entry's `client_id`: the server keeps it once, however often it is sent. */
+  /** An entry's `client_id`: the server keeps it once, however often it is sent. A job's is its own with what was done: done twice it is done. */
   id: string;
   personId: string;
   cellarId: string;
-  batchId: string;
-  input: NewEntry;
   /** `sending`: on its way from the form. `waiting`: until the network is back. `refused`: the server said no. */
   state: 'sending' | 'waiting' | 'refused';
   /** When it came into this state, ms. */
   since: number;
   /** Why it was refused. */
   reason: string | null;
-}
+};
+
+export type UnsentEntry = Extract<Unsent, { batchId: string }>;
+export type UnsentJob = Extract<Unsent, { batchId: null }>;
+export const isUnsentJob = (unsent: Unsent): unsent is UnsentJob => unsent.job !== undefined;
+export const isUnsentEntry = (unsent: Unsent): unsent is UnsentEntry => unsent.job === undefined;
 
 interface Schema extends DBSchema {
   unsent: { key: number; value: Unsent; indexes: { id: string } };

@@ -26,10 +26,10 @@ export function useAllUnsent(): Unsent[] {
   return entries;
 }
 
-/** What waits of the person here in this cellar, of one batch or of all; another cellar's goes when that one is shown. An entry on its way from an open form is not among them. */
-export function useUnsent(batchId?: string): Unsent[] {
+/** What waits of the person here in this cellar; another cellar's goes when that one is shown. An entry on its way from an open form is not among them. */
+export function useUnsent(): Unsent[] {
   const { me } = useMe();
-  return useAllUnsent().filter((entry) => entry.personId === me?.person.id && entry.cellarId === me.cellar.id && entry.state !== 'sending' && (batchId === undefined || entry.batchId === batchId));
+  return useAllUnsent().filter((entry) => entry.personId === me?.person.id && entry.cellarId === me.cellar.id && entry.state !== 'sending');
 }
 
 const AGAIN_MS = 15_000;

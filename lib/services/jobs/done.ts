@@ -26,14 +26,14 @@ export async function finish(job: Job, personId: string, now: Date, transaction:
   );
 }
 
-/** Ticks a job. Ticked twice it counts once; a second dose of a fining is logged with it. */
-export async function doJob(actor: Actor, id: string, clock: Clock = systemClock): Promise<JobBody> {
+/** Ticks a job. Ticked twice it counts once; a second dose of a fining is logged with it. `at`: when it was done, where that was before now. */
+export async function doJob(actor: Actor, id: string, at: string | null = null, clock: Clock = systemClock): Promise<JobBody> {
   authorize(actor, 'jobs.do');
   return inTransaction(async (transaction) => {
     const job = await loadJob(actor.cellarId, id, transaction);
     if (job.doneAt) return jobBody(actor.cellarId, id, transaction);
     if (job.droppedAt) throw new ConflictError('This job is no longer on the rounds.');
-    const now = new Date(clock.now());
+    const now = new Date(at === null ? clock.now() : Math.min(clock.now(), Math.max(Date.parse(at), job.createdAt.getTime())));
     await finish(job, actor.personId, now, transaction);
     if (job.kind === 'fining_b' && job.finingId) await giveSecond(actor, job.finingId, { at: now, text: null, dose: null, clientId: null }, transaction);
     await auditBy(actor, 'job.done', id, { title: job.title }, transaction);

@@ -33,6 +33,10 @@ describe('the bar under the header', () => {
   it('leads to the batch whose note was not taken', () => {
     expect(barWords({ ...facts, refused: [{ batchId: 'b1' }] })?.link).toEqual({ href: '/batches/b1', word: 'Look at it' });
   });
+
+  it('leads to the rounds where it was a job', () => {
+    expect(barWords({ ...facts, refused: [{ batchId: null }] })?.link).toEqual({ href: '/rounds', word: 'Look at it' });
+  });
 });
 
 describe('an entry that waits', () => {
