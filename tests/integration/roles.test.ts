@@ -75,7 +75,7 @@ describe('who may do what', () => {
 
   for (const [name, row] of Object.entries(TABLE)) {
     const endpoint = endpoints[name as EndpointName];
-    it(`${endpoint.method} ${endpoint.path}: ${row.may.join(', ')}${row.names ? '; another cellar’s is not found' : ''}`, async () => {
+    it.concurrent(`${endpoint.method} ${endpoint.path}: ${row.may.join(', ')}${row.names ? '; another cellar’s is not found' : ''}`, async () => {
       const ask = (things: Things, cookie?: string) => call(web, endpoint.method, `/api/v1${row.path(things)}`, { cookie, body: row.body?.(things) });
       const foreign = await strangers();
 
@@ -103,7 +103,7 @@ describe('who may do what', () => {
   for (const [name, row] of Object.entries(TABLE)) {
     const endpoint: Endpoint = endpoints[name as EndpointName];
     const bySession = endpoint.access === 'person' || endpoint.by === 'session';
-    it(`${endpoint.method} ${endpoint.path}, with a token: ${bySession ? 'never' : 'as the role of the token'}`, async () => {
+    it.concurrent(`${endpoint.method} ${endpoint.path}, with a token: ${bySession ? 'never' : 'as the role of the token'}`, async () => {
       const ask = (things: Things, token: string) => call(web, endpoint.method, `/api/v1${row.path(things)}`, { body: row.body?.(things), headers: { authorization: `Bearer ${token}`, 'sec-fetch-site': 'none' } });
       const keeper = await buildMember('keeper');
       const own = await things(keeper.cellarId, keeper.personId);
