@@ -33,8 +33,8 @@ const STATUS: Record<string, [status: number, title: string]> = {
 const RETRY_AFTER_UNAVAILABLE_S = 5;
 const log = logFor('http');
 
-/** PostgreSQL that is going down, coming up, full, or cancelling what waited too long (SQLSTATE). */
-const DATABASE_AWAY = /^(08|53|57P|57014|55P03|25P03)/;
+/** PostgreSQL that is going down, coming up, full, cancelling what waited too long, or what two have waited for on each other (SQLSTATE). */
+const DATABASE_AWAY = /^(08|53|57P|57014|55P03|25P03|40001|40P01)/;
 
 /** The database did not answer, as against answering "no". */
 export function databaseIsAway(error: unknown): boolean {
@@ -47,8 +47,10 @@ export function databaseIsAway(error: unknown): boolean {
 
 export function problemResponse(code: string, detail?: string, more: { errors?: Problem['errors']; headers?: Record<string, string> } = {}): Response {
   const [status, title] = STATUS[code] ?? STATUS.internal!;
+  // RFC 9110 15.5.2: a 401 names the way to sign in. Browsers ask nobody for a bearer token.
+  const challenge = status === 401 ? { 'www-authenticate': 'Bearer' } : {};
   const body: Problem = { type: `urn:fallbright:problem:${code}`, title, status, ...(detail ? { detail } : {}), ...(more.errors && Object.keys(more.errors).length > 0 ? { errors: more.errors } : {}) };
-  return new Response(JSON.stringify(body), { status, headers: { 'content-type': 'application/problem+json', 'cache-control': 'no-store', ...more.headers } });
+  return new Response(JSON.stringify(body), { status, headers: { 'content-type': 'application/problem+json', 'cache-control': 'no-store', ...challenge, ...more.headers } });
 }
 
 /** Turns whatever was thrown into an answer: ours as they are, a missing database as 503, the rest logged whole and shown blank. */

@@ -32,6 +32,15 @@ describe('the web API', () => {
     return { ...member, ask };
   }
 
+  it('answers an address that it does not have with a problem document, whoever asks', async () => {
+    const { ask } = await keeper();
+    for (const answer of [await ask('GET', '/batch'), await ask('POST', '/batches/x/y/z', {}), await call(web, 'GET', '/api/nothing')]) {
+      expect(answer.status).toBe(404);
+      expect(answer.headers.get('content-type')).toBe('application/problem+json');
+      expect(problem.parse(answer.body).type).toBe('urn:fallbright:problem:not-found');
+    }
+  });
+
   const CIDER = { name: 'Quince and crab', kind: 'cider', volume_l: 4.5, vessel_l: 5 };
 
   describe('batches', () => {
