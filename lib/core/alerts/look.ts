@@ -23,7 +23,8 @@ function isDone(rule: AlertRule, call: Call, events: readonly BatchEvent[]): boo
 export function lookAt(rule: AlertRule, assessment: Assessment, context: LookContext, now: Instant): Look {
   const call = assessment.calls[rule.call];
   if (call.kind === 'silent' && !context.silenceCounts) return { type: 'silence' };
-  const moot = (rule.necks !== null && !rule.necks.includes(context.neck)) || rule.notStages.includes(assessment.stage) || isDone(rule, call, context.events);
+  const outdone = rule.outdoneBy !== null && assessment.calls[rule.outdoneBy].verdict === 'yes';
+  const moot = outdone || (rule.necks !== null && !rule.necks.includes(context.neck)) || rule.notStages.includes(assessment.stage) || isDone(rule, call, context.events);
   if (moot) return { type: 'gone' };
   const applies =
     rule.verdicts.includes(call.verdict) && (rule.kinds === null || (call.kind !== null && rule.kinds.includes(call.kind))) && (call.kind === null || !rule.notKinds.includes(call.kind));

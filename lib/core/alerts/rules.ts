@@ -24,6 +24,8 @@ export interface AlertRule extends Timing {
   notStages: readonly Stage[];
   /** An entry of this kind is the answer: once it is logged the alert is over; null: only the data tell. */
   doneBy: EventKind | null;
+  /** Once this call says yes, it says more: two alerts for one vessel would be one too many. Null: none does. */
+  outdoneBy: CallName | null;
   /** Data older than this say nothing about now; null: the call is about the silence itself. */
   freshMs: number | null;
   /** Those who were told that it began are told that it is over. */
@@ -41,7 +43,7 @@ const DAY = 24 * HOUR;
 const ACT = { level: 'act', restMs: 6 * HOUR, repeatMs: 4 * HOUR, repeats: 3, tellsEnd: true } as const;
 const CHECK = { level: 'check', restMs: DAY, repeatMs: DAY, repeats: 3, tellsEnd: true } as const;
 const KNOW = { level: 'know', restMs: DAY, repeatMs: null, repeats: 0, tellsEnd: false } as const;
-const ANY = { kinds: null, notKinds: [], necks: null, notStages: [], doneBy: null } as const;
+const ANY = { kinds: null, notKinds: [], necks: null, notStages: [], doneBy: null, outdoneBy: null } as const;
 
 /**
  * The rules that hold where nobody chose others. The spans are our own: the
@@ -76,8 +78,8 @@ export const ALERT_RULES: readonly AlertRule[] = [
     when: 'the sensor is silent, frozen or drifting', until: null,
   },
   {
-    ...ANY, ...KNOW, name: 'rack', call: 'rack', verdicts: ['yes'], doneBy: 'rack', forMs: 3 * HOUR, keepMs: HOUR, freshMs: 36 * HOUR,
-    when: 'it can be racked', until: 'a racking is logged',
+    ...ANY, ...KNOW, name: 'rack', call: 'rack', verdicts: ['yes'], doneBy: 'rack', outdoneBy: 'bottle', forMs: 3 * HOUR, keepMs: HOUR, freshMs: 36 * HOUR,
+    when: 'it can be racked', until: 'a racking is logged or it can be bottled',
   },
   {
     // Withdrawn at once and said aloud: somebody told "ready" may be washing bottles.

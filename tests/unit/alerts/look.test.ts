@@ -73,6 +73,12 @@ describe('what a judgement says about a rule', () => {
     expect(look('rack', { calls }, { events: [{ at: NOW - HOUR, kind: 'note' }] }).type).toBe('true');
   });
 
+  it('does not tell of racking beside bottling: one vessel, one alert', () => {
+    const rack = callWith('yes', { since: NOW - 24 * HOUR });
+    expect(look('rack', { calls: { rack, bottle: callWith('yes') } })).toEqual({ type: 'gone' });
+    for (const verdict of ['no', 'soon', 'unknown'] as const) expect(look('rack', { calls: { rack, bottle: callWith(verdict) } }).type).toBe('true');
+  });
+
   it('lets a finished batch stand cold and a must wait hot', () => {
     const calls = { temperature: callWith('yes', { kind: 'low' }) };
     expect(look('temperature', { stage: 'terminal', calls })).toEqual({ type: 'gone' });

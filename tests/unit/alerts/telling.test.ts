@@ -113,7 +113,7 @@ describe('a rule as a cellar sets it', () => {
     expect(ruleAsSet(foam, [setting({ rule: 'foam', forMin: 0 })]).rule.forMs).toBe(0);
   });
   it('says its spans in words', () => {
-    expect(ruleWords(ruleNamed('rack'))).toEqual({ begins: 'Told when it can be racked for 3 h.', ends: 'Over when it has not been so for 1 h, or once a racking is logged.' });
+    expect(ruleWords(ruleNamed('rack'))).toEqual({ begins: 'Told when it can be racked for 3 h.', ends: 'Over when it has not been so for 1 h, or once a racking is logged or it can be bottled.' });
     expect(ruleWords(ruleNamed('bottle')).ends).toBe('Over as soon as that is no longer so.');
     expect(ruleWords(ruleNamed('refermentation')).begins).toBe('Told at once when a batch thought finished falls again.');
   });
