@@ -15,6 +15,7 @@ import { labelsPdfUrl, useLabelFacts, useLots } from '@/lib/client/lots';
 import { useMe } from '@/lib/client/me';
 import { STOCK_KEYS, STOCKS, type Design, type LabelFacts, type StockKey } from '@/lib/contracts/labels';
 import type { LotSummary } from '@/lib/contracts/lots';
+import { SheetPreview } from './SheetPreview';
 
 const DESIGN_OPTIONS: readonly { value: Design; name: string }[] = [
   { value: 'log', name: 'the fall' },
@@ -126,8 +127,7 @@ function Labels({ lot, lots, onLot }: { lot: LotSummary; lots: readonly LotSumma
           {label && <Facts label={label} />}
         </div>
         <div className="min-w-0 bg-well">
-          <p className="type-reason px-(--margin) py-2 text-ink2 strip:hidden">If this phone shows no sheet here, take the PDF: it is the same file.</p>
-          <iframe key={shown} src={`${shown}#toolbar=0&view=Fit`} title={`Labels of ${lot.name}, ${STOCKS[stock].name}`} className="h-[70dvh] w-full wide:h-full" />
+          <SheetPreview url={shown} title={`Labels of ${lot.name}, ${STOCKS[stock].name}`} />
         </div>
       </div>
     </>

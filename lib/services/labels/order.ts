@@ -9,8 +9,12 @@ export interface Stretch {
   leftwards: boolean;
 }
 
+/** Scripts that run leftwards, and the signs that turn a line. */
+const MAY_TURN = /[\u0590-\u08ff\u200e\u200f\u202a-\u202e\u2066-\u2069\ufb1d-\ufdff\ufe70-\ufefc]|[\u{10800}-\u{10fff}\u{1e800}-\u{1efff}]/u;
+
 /** A line as it stands from left to right: stretches of one direction, put in order (Unicode Bidirectional Algorithm, rule L2). */
 export function inOrder(line: string): Stretch[] {
+  if (!MAY_TURN.test(line)) return [{ text: line, leftwards: false }];
   const { levels } = bidi.getEmbeddingLevels(line);
   const stretches: Array<Stretch & { level: number }> = [];
   let index = 0;
