@@ -70,6 +70,16 @@ describe('the hydrometer correction', () => {
     }
   });
 
+  it('is the same for one graduated at 15.56, 15 or 17.5 °C: what it shows warm or cold and what the table says it would show at its own temperature are one liquid', () => {
+    const rows = table('hydrometer_temperature_correction_sg.csv').filter((row) => row.calibration_C !== 20);
+    expect(rows.filter((row) => row.calibration_C === 15.56).length).toBeGreaterThan(40);
+    for (const row of rows) {
+      const asRead = correctHydrometer(row.reading!, row.sample_C!, row.calibration_C!);
+      const atItsOwn = correctHydrometer(row.sg_at_calibration_temperature!, row.calibration_C!, row.calibration_C!);
+      expect(Math.abs(asRead - atItsOwn), `${row.calibration_C} ${row.reading} ${row.sample_C}`).toBeLessThan(2e-5);
+    }
+  });
+
   it('changes nothing at the temperature it is graduated for', () => {
     expect(correctHydrometer(1.05, 20)).toBeCloseTo(1.05, 9);
   });

@@ -293,6 +293,26 @@ describe('whatever is asked', () => {
     );
   });
 
+  test('the worst case of a bottle rises with the warmest place, with the sugar that goes in and with the points that are left', () => {
+    const value = (min: number, max: number) => fc.double({ min, max, noNaN: true });
+    const worst = (celsius: number, grams: number, left: number) => {
+      const key = 'sparkling_wine-750';
+      const drops = { way: 'drops', gramsEach: { lo: grams, value: grams, hi: grams }, drops: { [key]: 2 } } as const;
+      const request = benchRequest({ bottles: [bottle('sparkling_wine', 'wired_stopper', 750, 6)], warmestStoreC: celsius, priming: drops }, { ...twice(1.001 + left / 1000), expectedFinal: { lo: 1.0, value: 1.001, hi: 1.004 } });
+      return judgeBench(request).bottles[0]!.worst.bar;
+    };
+    fc.assert(
+      fc.property(value(12, 34), value(0.5, 4), value(0, 2), (celsius, grams, left) => {
+        const base = worst(celsius, grams, left);
+        // Two degrees, a gram and a point each press by more than the 0.1 bar that pressures are rounded up to.
+        expect(worst(celsius + 2, grams, left)).toBeGreaterThanOrEqual(base);
+        expect(worst(celsius, grams + 1, left)).toBeGreaterThan(base);
+        expect(worst(celsius, grams, left + 1)).toBeGreaterThan(base);
+      }),
+      { numRuns: 40 },
+    );
+  });
+
   test('pressure rises with temperature, with gas, with alcohol and with sugar', () => {
     const value = (min: number, max: number) => fc.double({ min, max, noNaN: true });
     fc.assert(
