@@ -12,7 +12,7 @@ export type Retain = (topic: string, payload: string) => Promise<void>;
  * Keeps every sensor's settings on its topic at the broker: all of them whenever
  * this house begins to listen, then those of the cellar where a sensor changed.
  */
-export function keepSettings(retain: Retain): { stop(): Promise<void> } {
+export function keepSettings(retain: Retain): { again(): void; stop(): Promise<void> } {
   const laid = new Map<string, string>();
   let owed = new Set<string | null>();
   let working: Promise<void> | null = null;
@@ -54,6 +54,11 @@ export function keepSettings(retain: Retain): { stop(): Promise<void> } {
     onError: (error) => log.warn({ err: error }, 'changes go unheard; connecting again'),
   });
   return {
+    /** The broker may have lost what lay there: all of it is laid anew. */
+    again: () => {
+      laid.clear();
+      ask(null);
+    },
     stop: async () => {
       stopped = true;
       clearTimeout(timer);

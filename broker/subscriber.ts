@@ -37,8 +37,10 @@ function instanceName(): string {
 
 const { announcer, stop: stopAnnouncer } = startAnnouncer();
 const stopPartitions = keepPartitionsAhead();
-const outside = await OutsideBroker.subscribe({ url, instance: instanceName(), record: (messages) => recordMessages(messages, announcer) });
-const settings = keepSettings((topic, payload) => outside.retain(topic, payload));
+// It may come back before there are any: then they are laid for the first time below.
+let settings: ReturnType<typeof keepSettings> | undefined;
+const outside = await OutsideBroker.subscribe({ url, instance: instanceName(), record: (messages) => recordMessages(messages, announcer), onBack: () => settings?.again() });
+settings = keepSettings((topic, payload) => outside.retain(topic, payload));
 const stopHeartbeat = startHeartbeat('broker', () => outside.figures());
 log.info({ broker: new URL(url).host }, 'subscriber ready');
 

@@ -27,6 +27,8 @@ export interface SubscriptionOptions {
   instance: string;
   record: (messages: readonly Message[]) => Promise<Recorded>;
   connections?: number;
+  /** The broker is back after it was away: it may have forgotten what was laid on its topics. */
+  onBack?: () => void;
 }
 
 export interface Subscription {
@@ -115,6 +117,7 @@ export class OutsideBroker implements Subscription {
     client.on('offline', () => log.warn({ index }, 'the outside broker is away'));
     return new Promise((resolve) => {
       client.on('connect', () => {
+        if (index === 0 && connection > 0) this.options.onBack?.();
         this.ask(client, index).then(resolve, (error: unknown) => {
           log.error({ err: error, index }, 'the outside broker refused the subscription');
           client.reconnect();

@@ -26,6 +26,7 @@ import { EntryForm } from './EntryForm';
 import type { EntryDraft, EntryKind } from './entry-form';
 import { Evidence } from './Evidence';
 import { factsOf, type LastReading } from './facts';
+import { litres } from './figures';
 import { Log } from './Log';
 import { logRows } from './log';
 import { OtherCurves } from './OtherCurves';

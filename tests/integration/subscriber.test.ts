@@ -1,12 +1,16 @@
 import type { MqttClient } from 'mqtt';
 import { QueryTypes } from 'sequelize';
 import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest';
+import { keepSettings } from '@/broker/settings';
 import { OutsideBroker } from '@/broker/subscription';
-import { readingsTopic } from '@/lib/contracts/topics';
+import { readingsTopic, settingsTopic } from '@/lib/contracts/topics';
 import { recordMessages, type Message } from '@/lib/services/readings/record';
+import { getSensor } from '@/lib/services/sensors/get';
+import { removeSensor } from '@/lib/services/sensors/remove';
+import { setSensor } from '@/lib/services/sensors/set';
 import { useDatabase } from '../support/database';
 import { signIn } from '../support/devices';
-import { buildSensor } from '../support/factories';
+import { buildMember, buildSensor } from '../support/factories';
 import { startMosquitto, type OutsideMqtt } from '../support/mosquitto';
 import { until } from '../support/processes';
 
@@ -96,6 +100,69 @@ describe('the ingest at an existing broker', () => {
       const [row] = await db.sequelize.query<{ n: number }>(`select count(*)::int as n from refusals where sensor_id is null and reason = 'no sensor has this name'`, { type: QueryTypes.SELECT });
       return row!.n === 2;
     });
+  });
+
+  it('lays settings on a sensor’s topic there, where one that comes later finds them, and takes them away with it', async () => {
+    const subscription = await subscribe();
+    const settings = keepSettings((topic, payload) => subscription.retain(topic, payload));
+    try {
+      const keeper = await buildMember('keeper');
+      const { sensor, secret } = await buildSensor({ cellarId: keeper.cellarId });
+      await setSensor(keeper, sensor.identifier, { interval_s: 600 });
+      const heard: string[] = [];
+      // The topic may be listened to before the word is laid there: the retained one comes either way.
+      const device = await signIn({ port: outside.port, sensor: sensor.identifier, secret });
+      device.on('message', (_topic, payload) => heard.push(payload.toString()));
+      await device.subscribeAsync(settingsTopic(sensor.identifier), { qos: 1 });
+      await until('the settings', () => heard.length > 0);
+      expect(JSON.parse(heard[0]!)).toEqual({ version: 1, interval_s: 600 });
+      await device.publishAsync(readingsTopic(sensor.identifier), JSON.stringify({ ...good(), settings: 1 }), { qos: 1 });
+      await until('the confirmation', async () => (await getSensor(keeper, sensor.identifier)).settings?.confirmed_at != null);
+      await removeSensor(keeper, sensor.identifier);
+      await until('the empty message', () => heard.at(-1) === '');
+      const late: string[] = [];
+      device.on('message', (_topic, payload) => late.push(payload.toString()));
+      await device.unsubscribeAsync(settingsTopic(sensor.identifier));
+      await device.subscribeAsync(settingsTopic(sensor.identifier), { qos: 1 });
+      // A word published now comes after anything that was kept.
+      await publisher.publishAsync(settingsTopic(sensor.identifier), 'probe', { qos: 1 });
+      await until('the probe', () => late.length > 0);
+      expect(late).toEqual(['probe']);
+      await device.endAsync(true);
+    } finally {
+      await settings.stop();
+    }
+  });
+
+  it('lays settings anew at a broker that comes back without what lay there', async () => {
+    const keeper = await buildMember('keeper');
+    const { sensor } = await buildSensor({ cellarId: keeper.cellarId });
+    const own = await startMosquitto();
+    const subscription = await OutsideBroker.subscribe({ url: own.url, instance: 'settings-back', record: recordMessages, connections: 1, onBack: () => settings.again() });
+    open.push(subscription);
+    let laid = 0;
+    const settings = keepSettings(async (topic, payload) => {
+      await subscription.retain(topic, payload);
+      if (topic === settingsTopic(sensor.identifier)) laid += 1;
+    });
+    await setSensor(keeper, sensor.identifier, { interval_s: 1_200 });
+    await until('the settings to be laid', () => laid === 1);
+    await own.stop();
+    const again = await startMosquitto(own.port);
+    try {
+      const device = await signIn({ port: again.port, sensor: sensor.identifier, secret: 'not asked for' });
+      const heard: string[] = [];
+      device.on('message', (_topic, payload) => heard.push(payload.toString()));
+      await device.subscribeAsync(settingsTopic(sensor.identifier), { qos: 1 });
+      await until('the settings', () => heard.length > 0, 20_000);
+      expect(JSON.parse(heard[0]!)).toEqual({ version: 1, interval_s: 1_200 });
+      await device.endAsync(true);
+    } finally {
+      await settings.stop();
+      await subscription.stop(500);
+      open = open.filter((one) => one !== subscription);
+      await again.stop();
+    }
   });
 
   it('does not take a sensor that is switched off', async () => {

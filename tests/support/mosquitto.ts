@@ -22,10 +22,10 @@ const answers = (port: number) =>
     }).on('error', () => resolve(false));
   });
 
-/** An MQTT broker that is not ours: Debian's mosquitto, on a free port, open to everybody on loopback. */
-export async function startMosquitto(): Promise<OutsideMqtt> {
+/** An MQTT broker that is not ours: Debian's mosquitto, on a free port or a given one, open to everybody on loopback. */
+export async function startMosquitto(wanted?: number): Promise<OutsideMqtt> {
   const folder = await mkdtemp(join(tmpdir(), 'fallbright-mosquitto-'));
-  const port = await freePort();
+  const port = wanted ?? (await freePort());
   const file = join(folder, 'mosquitto.conf');
   await writeFile(file, [`listener ${port} 127.0.0.1`, 'allow_anonymous true', 'persistence false', 'max_queued_messages 0'].join('\n'));
   const child: ChildProcess = spawn(PROGRAM, ['-c', file], { stdio: 'ignore' });
