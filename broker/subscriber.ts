@@ -38,14 +38,14 @@ function instanceName(): string {
 const { announcer, stop: stopAnnouncer } = startAnnouncer();
 const stopPartitions = keepPartitionsAhead();
 // It may come back before there are any: then they are laid for the first time below.
-let settings: ReturnType<typeof keepSettings> | undefined;
+let settings: ReturnType<typeof keepSettings> | null = null;
 const outside = await OutsideBroker.subscribe({ url, instance: instanceName(), record: (messages) => recordMessages(messages, announcer), onBack: () => settings?.again() });
 settings = keepSettings((topic, payload) => outside.retain(topic, payload));
 const stopHeartbeat = startHeartbeat('broker', () => outside.figures());
 log.info({ broker: new URL(url).host }, 'subscriber ready');
 
 onShutdown('subscriber', async () => {
-  await settings.stop();
+  await settings?.stop();
   const drained = await outside.stop(DRAIN_MS);
   log.info({ drained, ...outside.figures() }, 'subscriber stopped');
   stopHeartbeat();
