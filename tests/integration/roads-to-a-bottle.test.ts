@@ -1,15 +1,20 @@
 import { beforeEach, describe, expect, it } from 'vitest';
 import { Batch, Lot } from '@/db/models';
 import type { Actor } from '@/lib/auth/policies';
+import { createEntry as entryForm, updateBatch as updateForm, updateEntry as entryUpdate } from '@/lib/contracts/batches';
 import { blendForm, splitForm, topUpBatchForm } from '@/lib/contracts/family';
 import { ConflictError } from '@/lib/errors';
 import { bottleBatch } from '@/lib/services/bench/bottle';
 import { getBench } from '@/lib/services/bench/get';
 import { judge } from '@/lib/services/bench/judge';
+import { updateBatch } from '@/lib/services/batches/update';
+import { createEntry } from '@/lib/services/entries/create';
+import { removeEntry } from '@/lib/services/entries/remove';
+import { updateEntry } from '@/lib/services/entries/update';
 import { blendBatches } from '@/lib/services/family/blend';
 import { topUpBatch } from '@/lib/services/family/rack';
 import { splitBatch } from '@/lib/services/family/split';
-import { bottleForm, ciderAt, clockAt, DAY, isoAt, NOON, readAt } from '../support/cellar';
+import { bottleForm, ciderAt, clockAt, DAY, isoAt, NOON, readAt, sparklingBottle } from '../support/cellar';
 import { useDatabase } from '../support/database';
 import { buildMember } from '../support/factories';
 
@@ -112,5 +117,89 @@ describe('a top-up', () => {
     await stoppedAt(one.id, NOON + HOUR);
     await topUpBatch(brewer, two.id, topUpBatchForm.parse({ at, top_up: { what: 'water', volume_l: 0.05 } }), clockAt());
     expect((await judge(brewer, two.id, bottleForm({ at: isoAt(NOON + HOUR) }), clockAt(NOON + HOUR))).verdict).toBe('safe');
+  });
+});
+
+describe('the log', () => {
+  const log = (batchId: string, entry: Record<string, unknown>, now = NOON) => createEntry(brewer, batchId, entryForm.parse({ at: isoAt(now), ...entry }), clockAt(now));
+  const sugar = (now: number) => ({ kind: 'addition', at: isoAt(now), sugar_g: 30, detail: { substance: 'sugar', ingredient: 'table-sugar', grams: 30 } });
+
+  it('makes no lot: a bottling is not among what can be written', async () => {
+    const batch = await ciderAt(brewer);
+    expect(() => entryForm.parse({ kind: 'bottling', at, volume_l: 4 })).toThrow();
+    expect(await Lot.count({ where: { batchId: batch.id } })).toBe(0);
+  });
+
+  it('takes sugar for fizz as an addition, and then the bench waits for it to be gone: nothing is filled on top of it', async () => {
+    const batch = await ciderAt(brewer);
+    await log(batch.id, sugar(NOON));
+    const clock = clockAt(NOON + HOUR);
+    for (const form of [bottleForm({ at: isoAt(NOON + HOUR) }), bottleForm({ at: isoAt(NOON + HOUR), priming: { way: 'none' } })]) {
+      expect((await judge(brewer, batch.id, form, clock)).verdict).toBe('stop');
+      await expect(bottleBatch(brewer, batch.id, form, clock)).rejects.toBeInstanceOf(ConflictError);
+    }
+    // Six days on, the readings from before it say nothing of it.
+    await stoppedAt(batch.id, NOON + 6 * DAY);
+  });
+
+  it('is asked again at the moment of filling: what was safe an hour ago is not where something was logged since', async () => {
+    const batch = await ciderAt(brewer);
+    expect((await judge(brewer, batch.id, bottleForm(), clockAt())).verdict).toBe('safe');
+    await log(batch.id, { kind: 'reading', gravity: 0.997 }, NOON);
+    await stoppedAt(batch.id, NOON + 60_000);
+  });
+
+  it('corrected or taken back counts as it stands now', async () => {
+    const [corrected, taken] = [await ciderAt(brewer, { readDaysAgo: [] }), await ciderAt(brewer, { readDaysAgo: [] })];
+    for (const batch of [corrected, taken]) {
+      await log(batch.id, { kind: 'reading', gravity: 1.0 }, NOON - 9 * DAY);
+      const last = await log(batch.id, { kind: 'reading', gravity: 1.0 }, NOON - HOUR);
+      expect((await judge(brewer, batch.id, bottleForm(), clockAt())).verdict).toBe('safe');
+      if (batch === corrected) await updateEntry(brewer, batch.id, last.id, entryUpdate.parse({ gravity: 1.006 }), clockAt());
+      else await removeEntry(brewer, batch.id, last.id, clockAt());
+      await stoppedAt(batch.id, NOON);
+    }
+  });
+});
+
+describe('a second lot', () => {
+  it('of what stayed in the vessel is judged anew, as if there had been no first', async () => {
+    const batch = await ciderAt(brewer, { volumeL: 9, vesselL: 10 });
+    const first = bottleForm({ ends_batch: false, losses_l: 0, bottles: [sparklingBottle({ at_hand: 4 })] });
+    await bottleBatch(brewer, batch.id, first, clockAt());
+    await createEntry(brewer, batch.id, entryForm.parse({ kind: 'addition', at: isoAt(NOON), sugar_g: 60, detail: { substance: 'sugar', ingredient: 'table-sugar', grams: 60 } }), clockAt());
+    const later = NOON + DAY;
+    await expect(bottleBatch(brewer, batch.id, bottleForm({ at: isoAt(later) }), clockAt(later))).rejects.toBeInstanceOf(ConflictError);
+    expect(await Lot.count({ where: { batchId: batch.id } })).toBe(1);
+  });
+});
+
+describe('the set-up', () => {
+  it('cannot be written so that a cider that stopped high looks done: a yeast that leaves the sugar of fruit is not believed', async () => {
+    const stuck = await ciderAt(brewer, { fg: 1.015 });
+    await updateBatch(brewer, stuck.id, updateForm.parse({ attenuation_min_percent: 60, attenuation_max_percent: 70 }), clockAt());
+    expect(await stoppedAt(stuck.id, NOON)).toBe('stopped_high');
+    await updateBatch(brewer, stuck.id, updateForm.parse({ alcohol_tolerance_abv: 4 }), clockAt());
+    // A tolerance explains that it stands still; the sugar is sugar all the same, and no bottle takes it.
+    await stoppedAt(stuck.id, NOON);
+  });
+
+  it('opened again after it had ended fills nothing that is not judged', async () => {
+    const batch = await ciderAt(brewer, { fg: 1.015 });
+    await updateBatch(brewer, batch.id, updateForm.parse({ state: 'ended' }), clockAt());
+    await expect(bottleBatch(brewer, batch.id, bottleForm(), clockAt())).rejects.toBeInstanceOf(ConflictError);
+    await updateBatch(brewer, batch.id, updateForm.parse({ state: 'working' }), clockAt());
+    await stoppedAt(batch.id, NOON);
+  });
+});
+
+describe('an older sender', () => {
+  it('may tell what the bench no longer asks; none of it is believed', async () => {
+    const stuck = await ciderAt(brewer, { fg: 1.015 });
+    const told = { ...bottleForm(), verdict: 'safe', override: true, overridden: true, force: true, done: true, dose: { way: 'weighed', total_g: 40 }, rating_bar: 12, holds: { rating: 12, confirmed: true } };
+    await expect(bottleBatch(brewer, stuck.id, bottleForm(told as Parameters<typeof bottleForm>[0]), clockAt())).rejects.toBeInstanceOf(ConflictError);
+    const finished = await ciderAt(brewer);
+    const unread = { ...sparklingBottle({ confirmed_bar: null }), rating: 12, rating_confirmed: true } as ReturnType<typeof sparklingBottle>;
+    await expect(bottleBatch(brewer, finished.id, bottleForm({ bottles: [unread] }), clockAt())).rejects.toThrow(/confirmed/);
   });
 });

@@ -5,7 +5,7 @@ import { abvBalling } from '../strength/strength';
 import type { DrinkKind, Instant } from '../types';
 import type { Range } from '../units/range';
 import { pointsOf } from '../units/convert';
-import { lowestGravity, remainingPoints } from './remaining';
+import { credible, lowestGravity, remainingPoints } from './remaining';
 
 const HOUR = 3_600_000;
 /** Readings agree within a point: what a hydrometer of 0.001 divisions can tell. */
@@ -174,7 +174,8 @@ interface Explained {
 function explain(input: DoneInput, gravity: number): Explained {
   const points = pointsOf(gravity);
   const sugary = points - input.unfermentablePoints;
-  const expectedTop = input.expectedFinal ? pointsOf(input.expectedFinal.hi) : null;
+  const expected = credible(input);
+  const expectedTop = expected ? pointsOf(expected.hi) : null;
   const zoneTop = input.diastatic ? Math.min(0, expectedTop ?? 0) : expectedTop;
   const high = zoneTop !== null && sugary > zoneTop + HIGH_POINTS;
   const stabilised: Explanation | null = input.stabilised ? 'stabilised' : null;
@@ -191,7 +192,7 @@ function explain(input: DoneInput, gravity: number): Explained {
 }
 
 function reasonsOf(verdict: DoneVerdict, explanation: Explanation | null, input: DoneInput, remainingHi: number): string[] {
-  if (verdict === 'stopped_high') return [`It stopped above the expected ${(input.expectedFinal?.hi ?? 1).toFixed(3)} and nothing explains it. Up to ${Math.ceil(remainingHi)} points may still ferment.`];
+  if (verdict === 'stopped_high') return [`It stopped above the expected ${(credible(input)?.hi ?? 1).toFixed(3)} and nothing explains it. Up to ${Math.ceil(remainingHi)} points may still ferment.`];
   if (verdict === 'unknown' && !input.expectedFinal) return ['No expected final gravity: tell the yeast’s range, or ferment a warm sample out.'];
   if (verdict !== 'done') return [];
   switch (explanation) {

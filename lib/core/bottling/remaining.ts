@@ -30,6 +30,26 @@ export interface Leftover {
   stabilised: boolean;
 }
 
+/** Final gravity up to which a yeast's range alone is believed, SG, where the sugar is that of fruit or honey: all of it ferments. Our own rule. */
+const SUGAR_ENDS = { lo: 1.0, hi: 1.005 };
+/** Share of a beer's points that dextrins may leave, at most: 60 % apparent attenuation. Common practice, the lower end. */
+const MOST_DEXTRINS = 0.4;
+
+/**
+ * The final gravity to expect as far as a yeast's range can explain it. A range
+ * that leaves much sugar behind explains nothing: what is left then is explained
+ * by the alcohol, a sweetener or stabilising, or not at all.
+ */
+export function credible(drink: Pick<Leftover, 'kind' | 'originalGravity' | 'expectedFinal'>): Range | null {
+  const { kind, originalGravity: og, expectedFinal: expected } = drink;
+  if (!expected) return null;
+  const beer = og === null ? Infinity : sgOf(pointsOf(og) * MOST_DEXTRINS);
+  const top = kind === 'beer' ? { lo: beer, hi: beer } : SUGAR_ENDS;
+  const hi = Math.min(expected.hi, top.hi);
+  const lo = Math.min(expected.lo, top.lo);
+  return { lo, value: Math.min(hi, Math.max(lo, expected.value)), hi };
+}
+
 /** Lowest gravity the drink could reach, SG: by its kind's highest attenuation; with diastatic yeast at most 1.000. */
 export function lowestGravity(drink: Pick<Leftover, 'kind' | 'originalGravity' | 'diastatic'>): number {
   const og = drink.originalGravity;
@@ -50,8 +70,9 @@ export function remainingPoints(drink: Leftover): RangeFigure {
   }
   const above = (gravity: number): number => Math.max(0, pointsOf(drink.gravity) - pointsOf(gravity) - drink.unfermentablePoints);
   const floor = lowestGravity(drink);
-  const expected = drink.trustExpected ? drink.expectedFinal : null;
-  const hi = Math.max(READING_DOUBT_POINTS, above(expected && !drink.diastatic ? expected.lo : Math.min(floor, drink.expectedFinal?.lo ?? floor)));
+  const believed = credible(drink);
+  const expected = drink.trustExpected ? believed : null;
+  const hi = Math.max(READING_DOUBT_POINTS, above(expected && !drink.diastatic ? expected.lo : Math.min(floor, believed?.lo ?? floor)));
   const value = expected ? Math.min(hi, above(expected.value)) : hi;
   return figure(
     { lo: expected ? Math.min(value, above(expected.hi)) : 0, value, hi },

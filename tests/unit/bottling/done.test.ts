@@ -86,6 +86,22 @@ describe('sugar left, explained or not', () => {
     expect(working.remaining?.value.hi).toBeGreaterThan(10);
   });
 
+  test('a range that has a yeast leave the sugar of fruit or honey behind explains nothing, and its sugar counts', () => {
+    // 1.050 at 65 to 75 % would end at 1.0125 to 1.0175.
+    const claimed = { lo: 1.0125, value: 1.015, hi: 1.0175 };
+    for (const kind of ['cider', 'mead', 'wine'] as const) {
+      const check = checkDone(doneInput({ kind, expectedFinal: claimed, hydrometer: twice(1.015) }));
+      expect(check, kind).toMatchObject({ verdict: 'stopped_high', explanation: null });
+      expect(check.remaining?.value.hi, kind).toBeGreaterThan(15);
+    }
+    // Below 1.007 it is let pass as dry enough, with every point down to 1.000 counted.
+    expect(checkDone(doneInput({ expectedFinal: claimed, hydrometer: twice(1.006) })).remaining?.value.hi).toBeCloseTo(6, 6);
+    // Malt leaves dextrins, but not half of it.
+    const beer = { kind: 'beer', originalGravity: 1.05 } as const;
+    expect(checkDone(doneInput({ ...beer, expectedFinal: claimed, hydrometer: twice(1.015) })).verdict).toBe('done');
+    expect(checkDone(doneInput({ ...beer, expectedFinal: { lo: 1.024, value: 1.026, hi: 1.028 }, hydrometer: twice(1.026) })).verdict).toBe('stopped_high');
+  });
+
   test('without anything known of the yeast a sweet batch is unknown, a dry one done', () => {
     expect(checkDone(doneInput({ expectedFinal: null, hydrometer: twice(1.006) })).verdict).toBe('unknown');
     expect(checkDone(doneInput({ expectedFinal: null, hydrometer: twice(0.998) })).verdict).toBe('done');
