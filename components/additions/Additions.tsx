@@ -88,6 +88,10 @@ function Sulphite({ batchId, drink, mayLog }: Props) {
     name: SULPHITE_SALTS[salt].name,
     ingredient: salt === 'sodium_metabisulphite' ? 'sodium-metabisulphite' : 'potassium-metabisulphite',
     how: dose.saltG.how,
+    also: [
+      { of: 'free needed, and its pK', how: dose.freeNeededMgL.how },
+      { of: 'total after it', how: dose.totalAfterMgL.how },
+    ],
     facts: [
       `Needs ${Math.round(dose.freeNeededMgL.value)} mg/L free for ${target} mg/L molecular. Total after it: ${Math.ceil(dose.totalAfterMgL.value)} mg/L.`,
       ...(dose.molecularNow.value === null ? [] : [`Molecular now: ${dose.molecularNow.value.toFixed(2)} mg/L.`]),

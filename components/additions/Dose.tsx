@@ -19,6 +19,8 @@ export interface Told {
   /** Key of the catalogue, by which its nitrogen and sulphite are counted. */
   ingredient: string | null;
   how: HowAnswer;
+  /** Of the other figures that stand beside it. */
+  also?: readonly { of: string; how: HowAnswer }[];
   /** What stands beside it, in sentences. */
   facts: readonly string[];
   cautions: readonly string[];
@@ -64,7 +66,12 @@ export function Dose({ title, batchId, mayLog, told, needs, children }: { title:
                 <Sentence>{fact}</Sentence>
               </p>
             ))}
-            <How how={told.how} of={title} />
+            <div className="flex flex-wrap gap-x-4">
+              <How how={told.how} of={title} className="[&[open]]:basis-full" />
+              {told.also?.map((other) => (
+                <How key={other.of} how={other.how} of={other.of} named className="[&[open]]:basis-full" />
+              ))}
+            </div>
             {told.cautions.length > 0 && (
               <ul className="border-l-[3px] border-ochre pl-3">
                 {told.cautions.map((caution) => (

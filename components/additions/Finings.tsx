@@ -1,11 +1,14 @@
 'use client';
 
 import { useEffect, useState } from 'react';
+import { fromLocal, toLocal } from '@/components/batch/entry-form';
+import { litres } from '@/components/batch/figures';
 import { when } from '@/components/charts/zone';
 import { countdown } from '@/components/rounds/rows';
 import { Button } from '@/components/ui/Button';
 import { Field, Select } from '@/components/ui/Field';
-import { FormError } from '@/components/ui/Notice';
+import { Haze } from '@/components/ui/Haze';
+import { ErrorState, FormError } from '@/components/ui/Notice';
 import { Sentence } from '@/components/ui/Sentence';
 import { State } from '@/components/ui/StateMark';
 import { secondDose, startFining, useFinings } from '@/lib/client/cellarwork';
@@ -13,6 +16,9 @@ import { ClientError } from '@/lib/client/fetcher';
 import type { FiningBody } from '@/lib/contracts/family';
 import { FININGS } from '@/lib/core/additions/fining';
 import { HAZES } from '@/lib/core/additions/haze';
+
+/** The demijohn that usual doses are told for, L. */
+const USUAL_FOR_L = 4.5;
 
 function Running({ fining, now, timeZone, mayDo, onFail }: { fining: FiningBody; now: number; timeZone: string; mayDo: boolean; onFail: (message: string) => void }) {
   const [seconds, setSeconds] = useState<number | null>(null);
@@ -63,8 +69,10 @@ function Running({ fining, now, timeZone, mayDo, onFail }: { fining: FiningBody;
 }
 
 /** Finings in one or two doses with their clock, and why a drink may stay cloudy. */
-export function Finings({ batchId, now, timeZone, mayDo }: { batchId: string; now: number; timeZone: string; mayDo: boolean }) {
-  const { finings } = useFinings(batchId);
+export function Finings({ batchId, volumeL, now, timeZone, mayDo }: { batchId: string; volumeL: number; now: number; timeZone: string; mayDo: boolean }) {
+  const { finings, error, retry } = useFinings(batchId);
+  /** Empty: now, so that a page left open does not start the clock late. */
+  const [at, setAt] = useState('');
   const [key, setKey] = useState('two-part');
   const [dose, setDose] = useState('');
   const [failed, setFailed] = useState<string | null>(null);
@@ -73,12 +81,17 @@ export function Finings({ batchId, now, timeZone, mayDo }: { batchId: string; no
   const [clientId, setClientId] = useState(() => crypto.randomUUID());
   const chosen = FININGS.find((item) => item.key === key);
 
+  const times = volumeL / USUAL_FOR_L;
+
   async function start() {
+    const firstAt = at === '' ? new Date().toISOString() : fromLocal(at, timeZone);
+    if (firstAt === null) return setFailed('Choose a day and a time.');
     setBusy(true);
     setFailed(null);
     try {
-      await startFining(batchId, { at: new Date().toISOString(), fining: key, dose: dose.trim() === '' ? null : dose.trim(), client_id: clientId });
+      await startFining(batchId, { at: firstAt, fining: key, dose: dose.trim() === '' ? null : dose.trim(), client_id: clientId });
       setDose('');
+      setAt('');
       setClientId(crypto.randomUUID());
     } catch (error) {
       setFailed(error instanceof ClientError ? error.message : 'It was not saved. Try again; saving twice keeps one.');
@@ -88,6 +101,13 @@ export function Finings({ batchId, now, timeZone, mayDo }: { batchId: string; no
 
   return (
     <div className="flex max-w-[700px] flex-col gap-4">
+      {error && !finings ? (
+        <ErrorState title="The finings did not load" onRetry={retry}>
+          {error.message}
+        </ErrorState>
+      ) : (
+        !finings && <Haze height={64} label="Loading the finings" />
+      )}
       {finings && finings.length > 0 && (
         <ul className="border-t">
           {finings.map((fining) => (
@@ -105,11 +125,12 @@ export function Finings({ batchId, now, timeZone, mayDo }: { batchId: string; no
                 </option>
               ))}
             </Select>
-            <Field label="Dose" autoComplete="off" maxLength={60} placeholder={chosen?.usualDose} value={dose} onChange={(event) => setDose(event.target.value)} />
+            <Field label="Dose, as measured" autoComplete="off" maxLength={60} hint="As the packet says for this volume." value={dose} onChange={(event) => setDose(event.target.value)} />
+            <Field label={chosen?.intervalMin === null ? 'Went in' : 'First dose went in'} type="datetime-local" max={toLocal(now + 600, timeZone)} value={at} onChange={(event) => setAt(event.target.value)} hint="Empty: now." />
           </div>
           {chosen && (
             <p className="type-reason border-l-[3px] border-ochre pl-3">
-              <Sentence>{`Takes ${chosen.takes}. Usual for 4.5 L: ${chosen.usualDose}.${chosen.intervalMin === null ? '' : ` Second part after ${chosen.intervalMin} min.`} Settles in ${chosen.settleDays.lo} to ${chosen.settleDays.hi} days. ${chosen.allergens.length > 0 ? `Allergen: ${chosen.allergens.join(', ')}. ` : ''}${chosen.caution}`}</Sentence>
+              <Sentence>{`Takes ${chosen.takes}. Usual for ${USUAL_FOR_L} L: ${chosen.usualDose}.${times > 1.15 || times < 0.85 ? ` Here are ${litres(volumeL)}: ${Number(times.toFixed(1))} times that.` : ''}${chosen.intervalMin === null ? '' : ` Second part after ${chosen.intervalMin} min.`} Settles in ${chosen.settleDays.lo} to ${chosen.settleDays.hi} days. ${chosen.allergens.length > 0 ? `Allergen: ${chosen.allergens.join(', ')}. ` : ''}${chosen.caution}`}</Sentence>
               <span className="type-tick block text-ink2">{chosen.source}</span>
             </p>
           )}

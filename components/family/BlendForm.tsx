@@ -15,16 +15,10 @@ import { blendBatches } from '@/lib/client/cellarwork';
 import type { BatchBody } from '@/lib/contracts/batches';
 import { blendForm, type DrinkBody } from '@/lib/contracts/family';
 import { blendInto } from '@/lib/core/family/cellarwork';
-import { contentsOf } from '@/lib/core/family/contents';
 import { BlendPart, type BlendPartDraft } from './BlendPart';
+import { contentsIn } from './poured';
 import { useSend } from '@/lib/client/use-send';
 import { newVessel, showsVessel, vesselBody, VesselFields } from './VesselFields';
-
-/** What a part brings, where its gravity is known: the same reckoning as the server's. */
-function contentsIn(drink: DrinkBody, volumeL: number) {
-  const { effective_og: og, gravity } = drink;
-  return og === null || gravity === null || !(volumeL > 0) ? null : contentsOf({ volumeL, originalGravity: Math.max(og, gravity), gravity });
-}
 
 /** Pours this batch together with others, into a new vessel or into one of them. What it comes to is told before anything is poured. */
 export function BlendForm({ batch, now, timeZone }: { batch: BatchBody; now: number; timeZone: string }) {

@@ -35,7 +35,7 @@ const TABS = [
 ] as const;
 type Tab = (typeof TABS)[number]['value'];
 /** Work that may change the family, which stands beside it. */
-const MOVES: readonly Tab[] = ['top-up', 'split', 'blend'];
+const MOVES: readonly Tab[] = ['split', 'blend'];
 
 /** The gravity that a must with all the sugar so far would have had. */
 const WITH_ADDITIONS = (drink: DrinkBody): HowAnswer =>
@@ -110,7 +110,7 @@ export function CellarWork({ batchId }: { batchId: string }) {
           ))}
         {tab === 'rack' && <RackForm key="rack" batch={batch} rack now={now} timeZone={timeZone} />}
         {tab === 'top-up' && <RackForm key="top-up" batch={batch} rack={false} now={now} timeZone={timeZone} />}
-        {tab === 'fine' && <Finings batchId={batch.id} now={now} timeZone={timeZone} mayDo={mayMove} />}
+        {tab === 'fine' && <Finings batchId={batch.id} volumeL={batch.volume_l} now={now} timeZone={timeZone} mayDo={mayMove} />}
         {tab === 'split' && <SplitForm batch={batch} now={now} timeZone={timeZone} />}
         {tab === 'blend' && <BlendForm batch={batch} now={now} timeZone={timeZone} />}
         {tab === 'family' && <Family batchId={batch.id} timeZone={timeZone} />}

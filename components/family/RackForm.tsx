@@ -11,11 +11,14 @@ import { FormError } from '@/components/ui/Notice';
 import { Sentence } from '@/components/ui/Sentence';
 import { UnitField } from '@/components/units/UnitField';
 import { useBatches } from '@/lib/client/batches';
-import { rackBatch, topUpBatch } from '@/lib/client/cellarwork';
+import { rackBatch, topUpBatch, useDrink } from '@/lib/client/cellarwork';
 import { ClientError } from '@/lib/client/fetcher';
 import type { BatchBody } from '@/lib/contracts/batches';
 import { rackForm, topUpBatchForm, type MovedBody } from '@/lib/contracts/family';
 import { NECKS } from '@/lib/core/types';
+import { Comes } from './Comes';
+import { poured } from './poured';
+import { SulphiteHint } from './SulphiteHint';
 
 type What = '' | 'water' | 'must' | 'drink' | 'batch';
 
@@ -50,6 +53,7 @@ const fieldOf = (path: string): string => FIELD_OF[path] ?? (/top_up(\.\d+)?\.vo
 /** Racking off the lees, or topping up alone: what stayed behind, where it went, what filled the room. */
 export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rack: boolean; now: number; timeZone: string }) {
   const { batches } = useBatches({ state: 'working' });
+  const { drink } = useDrink(batch.id);
   const [draft, setDraft] = useState({ left: '', vessel: '', tag: '', place: '', neck: '', sulphite: '', what: (rack ? '' : 'water') as What, topUp: '', gravity: '', original: '', from: '', at: toLocal(now, timeZone), text: '' });
   const [errors, setErrors] = useState<Record<string, string>>({});
   const [failed, setFailed] = useState<string | null>(null);
@@ -96,69 +100,85 @@ export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rac
     setSending(false);
   }
 
+  const { drink: other } = useDrink(draft.what === 'batch' && draft.from !== '' ? draft.from : null);
   if (moved) return <Effect moved={moved} />;
+  const result = poured(drink, batch.volume_l, rack ? (typedNumber(draft.left) ?? NaN) : 0, typedNumber(draft.vessel) ?? batch.vessel_l, {
+    what: draft.what,
+    litres: typedNumber(draft.topUp),
+    gravity: typedGravity(draft.gravity),
+    original: typedGravity(draft.original),
+    from: other ?? null,
+  });
+  const waits = result === null ? 'Say how much stays on the lees.' : drink && (drink.gravity === null || drink.effective_og === null) ? 'Gravity and strength follow once an original gravity and a reading are logged.' : 'Gravity and strength follow once it is told what goes in.';
+  const before = batch.volume_l - (rack ? (typedNumber(draft.left) ?? 0) : 0);
+  const room = (typedNumber(draft.vessel) ?? batch.vessel_l) - before;
   const given = (name: keyof typeof draft) => ({ value: draft[name], onChange: set(name), error: errors[name] });
   const field = (name: keyof typeof draft, label: string) => <Field label={label} autoComplete="off" {...given(name)} />;
   return (
-    <form onSubmit={(event) => void send(event)} noValidate className="flex max-w-[600px] flex-col gap-4">
-      {rack && (
-        <>
-          <UnitField measure="volume" label="Left on the lees and in the hose" {...given('left')} />
-          <fieldset className="grid grid-cols-2 gap-3">
-            <legend className="type-verdict mb-2">Into another vessel, where it changed</legend>
-            <UnitField measure="volume" label={`It holds (was ${litres(batch.vessel_l)})`} {...given('vessel')} />
-            {field('tag', `Tag (was ${batch.tag ?? 'none'})`)}
-            {field('place', 'Place')}
-            <Select label="The neck now" value={draft.neck} onChange={set('neck')}>
-              <option value="">as it was</option>
-              {NECKS.map((neck) => (
-                <option key={neck} value={neck}>
-                  {NECK_WORDS[neck]}
-                </option>
-              ))}
-            </Select>
-          </fieldset>
-        </>
-      )}
-      <fieldset className="grid grid-cols-2 gap-3">
-        <legend className="type-verdict mb-2">Topped up with</legend>
-        <Select label="What" value={draft.what} onChange={set('what')}>
-          {rack && <option value="">nothing</option>}
-          <option value="water">water</option>
-          <option value="must">juice or must</option>
-          <option value="batch">another batch here</option>
-          <option value="drink">a drink from elsewhere</option>
-        </Select>
-        {draft.what !== '' && <UnitField measure="volume" label="How much" {...given('topUp')} />}
-        {(draft.what === 'must' || draft.what === 'drink') && <UnitField measure="gravity" label="Its gravity" {...given('gravity')} />}
-        {draft.what === 'drink' && <UnitField measure="gravity" label="Its original gravity" {...given('original')} />}
-        {draft.what === 'batch' && (
-          <Select label="Which batch" className="col-span-full" value={draft.from} onChange={set('from')} error={errors.from}>
-            <option value="">Choose</option>
-            {(batches ?? [])
-              .filter((item) => item.id !== batch.id)
-              .map((item) => (
-                <option key={item.id} value={item.id}>
-                  {item.name}
-                </option>
-              ))}
-          </Select>
+    <div className="flex flex-col gap-6 wide:grid wide:grid-cols-[600px_minmax(0,424px)] wide:gap-x-12">
+      <form onSubmit={(event) => void send(event)} noValidate className="flex max-w-[600px] flex-col gap-4">
+        {rack && (
+          <>
+            <UnitField measure="volume" label="Left on the lees and in the hose" {...given('left')} />
+            <fieldset className="grid grid-cols-2 gap-3">
+              <legend className="type-verdict mb-2">Into another vessel, where it changed</legend>
+              <UnitField measure="volume" label={`It holds (was ${litres(batch.vessel_l)})`} {...given('vessel')} />
+              {field('tag', `Tag (was ${batch.tag ?? 'none'})`)}
+              {field('place', 'Place')}
+              <Select label="The neck now" value={draft.neck} onChange={set('neck')}>
+                <option value="">as it was</option>
+                {NECKS.map((neck) => (
+                  <option key={neck} value={neck}>
+                    {NECK_WORDS[neck]}
+                  </option>
+                ))}
+              </Select>
+            </fieldset>
+          </>
         )}
-      </fieldset>
-      {rack && (
-        <>
-          <Field label="Potassium metabisulphite with it" unit="g" inputMode="decimal" autoComplete="off" {...given('sulphite')} />
-          <p className="type-reason text-ink2">The sulphite dose stands under Additions. Keep air out: a full vessel and a hose that reaches the bottom. Lift a full glass vessel with both hands, one under it, never by its neck; nothing hot into cold glass.</p>
-        </>
-      )}
-      <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={draft.at} onChange={set('at')} error={errors.at} />
-      <Field label="Note" autoComplete="off" maxLength={2000} value={draft.text} onChange={set('text')} />
-      {failed && <FormError>{failed}</FormError>}
-      <div className="flex justify-end">
-        <Button look="first" type="submit" disabled={sending}>
-          {sending ? 'Saving' : rack ? 'Racked' : 'Topped up'}
-        </Button>
-      </div>
-    </form>
+        <fieldset className="grid grid-cols-2 gap-3">
+          <legend className="type-verdict mb-2">Topped up with</legend>
+          <Select label="What" value={draft.what} onChange={set('what')}>
+            {rack && <option value="">nothing</option>}
+            <option value="water">water</option>
+            <option value="must">juice or must</option>
+            <option value="batch">another batch here</option>
+            <option value="drink">a drink from elsewhere</option>
+          </Select>
+          {draft.what !== '' && <UnitField measure="volume" label="How much" hint={room > 0 ? `To the brim: ${litres(room)}.` : 'It is full.'} {...given('topUp')} />}
+          {(draft.what === 'must' || draft.what === 'drink') && <UnitField measure="gravity" label="Its gravity" {...given('gravity')} />}
+          {draft.what === 'drink' && <UnitField measure="gravity" label="Its original gravity" {...given('original')} />}
+          {draft.what === 'batch' && (
+            <Select label="Which batch" className="col-span-full" value={draft.from} onChange={set('from')} error={errors.from}>
+              <option value="">Choose</option>
+              {(batches ?? [])
+                .filter((item) => item.id !== batch.id)
+                .map((item) => (
+                  <option key={item.id} value={item.id}>
+                    {item.name}
+                  </option>
+                ))}
+            </Select>
+          )}
+        </fieldset>
+        {rack && (
+          <>
+            <Field label="Potassium metabisulphite with it" unit="g" inputMode="decimal" autoComplete="off" {...given('sulphite')} hint={<SulphiteHint drink={drink} volumeL={result?.litres ?? batch.volume_l} />} />
+            <p className="type-reason text-ink2">Keep air out: a full vessel and a hose that reaches the bottom. Lift a full glass vessel with both hands, one under it, never by its neck; nothing hot into cold glass.</p>
+          </>
+        )}
+        <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={draft.at} onChange={set('at')} error={errors.at} />
+        <Field label="Note" autoComplete="off" maxLength={2000} value={draft.text} onChange={set('text')} />
+        {failed && <FormError>{failed}</FormError>}
+        <div className="flex justify-end">
+          <Button look="first" type="submit" disabled={sending}>
+            {sending ? 'Saving' : rack ? 'Racked' : 'Topped up'}
+          </Button>
+        </div>
+      </form>
+      <aside className="wide:sticky wide:top-4 wide:self-start">
+        <Comes batch={batch} neck={NECKS.find((neck) => neck === draft.neck) ?? batch.neck} result={result} waits={waits} />
+      </aside>
+    </div>
   );
 }

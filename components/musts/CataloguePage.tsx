@@ -4,6 +4,7 @@ import { useState } from 'react';
 import { Sheet } from '@/components/batch/Sheet';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
+import { temperatureNumber, temperatureText } from '@/components/ui/units';
 import { Haze } from '@/components/ui/Haze';
 import { EmptyState, ErrorState, FormError } from '@/components/ui/Notice';
 import { GroupBar, PageHead } from '@/components/ui/Page';
@@ -20,7 +21,7 @@ type Yeast = CatalogueBody['yeasts'][number];
 type Opened = { sort: 'ingredient'; item: Ingredient | null } | { sort: 'yeast'; item: Yeast | null };
 
 const sugarWords = ({ kind, extract_share: share }: Ingredient) => (share.hi === 0 ? null : `${ends({ lo: 100 * share.lo, value: 100 * share.value, hi: 100 * share.hi }, 1)} ${kind === 'juice' ? '°Bx' : '% sugar'}`);
-const yeastWords = (yeast: Yeast) => `bears ${ends(yeast.tolerance_abv, 0)} % vol, ${yeast.temperature_c.min} to ${yeast.temperature_c.max} °C, nitrogen need ${yeast.nitrogen_need}${yeast.diastatic ? ', diastatic' : ''}`;
+const yeastWords = (yeast: Yeast) => `bears ${ends(yeast.tolerance_abv, 0)} % vol, ${temperatureNumber(yeast.temperature_c.min, 0)} to ${temperatureText(yeast.temperature_c.max, 0)}, nitrogen need ${yeast.nitrogen_need}${yeast.diastatic ? ', diastatic' : ''}`;
 
 /** All that a must sheet can be written with: the program's and the cellar's own, which may be changed. */
 export function CataloguePage() {

@@ -7,6 +7,7 @@ import { Choice } from '@/components/ui/Choice';
 import { Field } from '@/components/ui/Field';
 import { How } from '@/components/ui/How';
 import { Sentence } from '@/components/ui/Sentence';
+import { UnitField } from '@/components/units/UnitField';
 import { State } from '@/components/ui/StateMark';
 import { camelKeys } from '@/lib/contracts/case';
 import type { MustBody } from '@/lib/contracts/musts';
@@ -83,10 +84,14 @@ export function Measured({ must, keptAs, mayStart }: { must: MustBody; keptAs: s
           Original gravity
         </h3>
         <Choice label="Read with" bare value={instrument} onChoose={(next) => setTyped({ ...typed, instrument: next })} options={[{ value: 'hydrometer', name: 'Hydrometer' }, { value: 'refractometer', name: 'Refractometer' }]} />
-        <Field label={instrument === 'hydrometer' ? 'Gravity as read' : 'As read'} unit={instrument === 'hydrometer' ? 'SG' : '°Bx'} inputMode="decimal" autoComplete="off" placeholder={instrument === 'hydrometer' ? '1.062' : '15.2'} value={reading} onChange={set('reading')} />
+        {instrument === 'hydrometer' ? (
+          <UnitField measure="gravity" label="Gravity as read" placeholder="1.062" value={reading} onChange={set('reading')} />
+        ) : (
+          <Field label="As read" unit="°Bx" inputMode="decimal" autoComplete="off" placeholder="15.2" value={reading} onChange={set('reading')} />
+        )}
         <div className="grid grid-cols-2 gap-3">
-          <Field label="Sample" unit="°C" inputMode="decimal" autoComplete="off" value={sample} onChange={set('sample')} hint={instrument === 'refractometer' ? 'Empty: it corrects itself.' : undefined} />
-          {instrument === 'hydrometer' && <Field label="Hydrometer made for" unit="°C" inputMode="decimal" autoComplete="off" value={calibration} onChange={set('calibration')} hint="20, or 15.56 on older ones." />}
+          <UnitField measure="temperature" label="Sample" value={sample} onChange={set('sample')} hint={instrument === 'refractometer' ? 'Empty: it corrects itself.' : undefined} />
+          {instrument === 'hydrometer' && <UnitField measure="temperature" label="Hydrometer made for" value={calibration} onChange={set('calibration')} hint={<Sentence>20 °C, or 15.6 °C on older ones.</Sentence>} />}
         </div>
         <div aria-live="polite">
           {measured && !measured.ok && <p className="type-body border-l-[3px] border-madder pl-3"><Sentence>{measured.sentence}</Sentence></p>}
@@ -106,7 +111,7 @@ export function Measured({ must, keptAs, mayStart }: { must: MustBody; keptAs: s
           Pitch, step by step
         </h3>
         <div className="grid grid-cols-2 gap-3">
-          <Field label="Must now" unit="°C" inputMode="decimal" autoComplete="off" value={mustC} onChange={set('mustC')} />
+          <UnitField measure="temperature" label="Must now" value={mustC} onChange={set('mustC')} />
           <Field label="Dry yeast" unit="g" inputMode="decimal" autoComplete="off" value={dry} onChange={set('dry')} />
         </div>
         <div aria-live="assertive">

@@ -62,7 +62,7 @@ function Strengths({ outcome }: { outcome: MustOutcome }) {
 }
 
 /** Pieces give their sugar, and fruit its juice, over days: the must may rise or fall until then. */
-const pitchWords = (pitch: number, whole: number): string => (pitch < whole ? `${pitch.toFixed(3)} at the pitch, the rest of the sugar comes over days` : `${pitch.toFixed(3)} at the pitch, before the fruit has let go of its juice`);
+const pitchWords = (pitch: number, whole: number): string => (pitch < whole ? `${gravityText(pitch)} at the pitch, the rest of the sugar comes over days` : `${gravityText(pitch)} at the pitch, before the fruit has let go of its juice`);
 
 /** What may spoil the batch or hold it up is said first; what is only good to know stands below the figures. */
 const LOUD: ReadonlySet<MustOutcome['notes'][number]['kind']> = new Set(['preservative', 'tolerance', 'diastatic', 'dose']);

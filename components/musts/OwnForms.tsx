@@ -5,6 +5,7 @@ import { Box } from '@/components/ui/Box';
 import { Button } from '@/components/ui/Button';
 import { Choice } from '@/components/ui/Choice';
 import { Field, Select, TextField } from '@/components/ui/Field';
+import { UnitField } from '@/components/units/UnitField';
 import { FormError } from '@/components/ui/Notice';
 import { addToCatalogue, updateCatalogue } from '@/lib/client/musts';
 import { useSend, type PathErrors } from '@/lib/client/use-send';
@@ -111,8 +112,8 @@ export function YeastOfOurs({ id, start, onKept }: { id: string | null; start: Y
       <div className="grid grid-cols-2 gap-3">
         <Field label="Bears up to" unit="% vol" autoComplete="off" placeholder="12 to 14" value={draft.tolerance} onChange={set('tolerance')} error={at('tolerance_abv')} />
         <Field label="Attenuation in wort" unit="%" autoComplete="off" placeholder="73 to 80" value={draft.attenuation} onChange={set('attenuation')} error={at('attenuation')} hint="Empty: takes all the sugar." />
-        <Field label="Works from" unit="°C" inputMode="decimal" autoComplete="off" value={draft.coldest} onChange={set('coldest')} error={at('temperature_c.min')} />
-        <Field label="to" unit="°C" inputMode="decimal" autoComplete="off" value={draft.warmest} onChange={set('warmest')} error={at('temperature_c.max')} />
+        <UnitField measure="temperature" label="Works from" value={draft.coldest} onChange={set('coldest')} error={at('temperature_c.min')} />
+        <UnitField measure="temperature" label="to" value={draft.warmest} onChange={set('warmest')} error={at('temperature_c.max')} />
       </div>
       <Choice label="Need of nitrogen" value={draft.need} onChoose={(need) => setDraft((before) => ({ ...before, need }))} options={NITROGEN_NEEDS.map((value) => ({ value, name: value }))} />
       <Box ticked={draft.diastatic} onTick={(diastatic) => setDraft((before) => ({ ...before, diastatic }))}>

@@ -5,6 +5,8 @@ import { Sheet } from '@/components/batch/Sheet';
 import { Button } from '@/components/ui/Button';
 import { Choice } from '@/components/ui/Choice';
 import { Field, Select, TextField } from '@/components/ui/Field';
+import { temperatureNumber, temperatureText } from '@/components/ui/units';
+import { UnitField } from '@/components/units/UnitField';
 import { useMe } from '@/lib/client/me';
 import { useCatalogue } from '@/lib/client/musts';
 import type { CatalogueBody, IngredientBody } from '@/lib/contracts/catalogue';
@@ -117,7 +119,7 @@ export function SheetEditor({ draft, errors, onChange, children }: SheetEditorPr
             const { id: _row, ...yeast } = found;
             set({ yeast });
           }}
-          hint={draft.yeast ? `bears ${draft.yeast.tolerance_abv.lo} to ${draft.yeast.tolerance_abv.hi} % vol, ${draft.yeast.temperature_c.min} to ${draft.yeast.temperature_c.max} °C, nitrogen need ${draft.yeast.nitrogen_need}` : 'Not chosen: all the sugar is taken to ferment.'}
+          hint={draft.yeast ? `bears ${draft.yeast.tolerance_abv.lo} to ${draft.yeast.tolerance_abv.hi} % vol, ${temperatureNumber(draft.yeast.temperature_c.min, 0)} to ${temperatureText(draft.yeast.temperature_c.max, 0)}, nitrogen need ${draft.yeast.nitrogen_need}` : 'Not chosen: all the sugar is taken to ferment.'}
         >
           <option value="">not chosen yet</option>
           {!known && draft.yeast && <option value={draft.yeast.name}>{draft.yeast.name}</option>}
@@ -128,8 +130,8 @@ export function SheetEditor({ draft, errors, onChange, children }: SheetEditorPr
           ))}
           {may('catalogue.write') && <option value={NOT_LISTED}>another, by its packet</option>}
         </Select>
-        <Field label="Vessel holds" unit="L" inputMode="decimal" autoComplete="off" value={draft.vessel} onChange={(event) => set({ vessel: event.target.value })} error={errors.vessel} />
-        <Field label="Boiled away" unit="L" inputMode="decimal" autoComplete="off" value={draft.boiled} onChange={(event) => set({ boiled: event.target.value })} error={errors.boiled} />
+        <UnitField measure="volume" label="Vessel holds" value={draft.vessel} onChange={(event) => set({ vessel: event.target.value })} error={errors.vessel} />
+        <UnitField measure="volume" label="Boiled away" value={draft.boiled} onChange={(event) => set({ boiled: event.target.value })} error={errors.boiled} />
       </div>
       {ownYeast && (
         <Sheet title="A yeast of your own" onClose={() => setOwnYeast(false)}>

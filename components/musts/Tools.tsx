@@ -1,10 +1,11 @@
 'use client';
 
 import { useState, type FormEvent } from 'react';
-import { typedGravity, typedNumber } from '@/components/batch/figures';
+import { litres, typedGravity, typedNumber } from '@/components/batch/figures';
 import { Button } from '@/components/ui/Button';
 import { Choice } from '@/components/ui/Choice';
 import { Field, Select } from '@/components/ui/Field';
+import { UnitField } from '@/components/units/UnitField';
 import { amountFor, scaleToFill } from '@/lib/core/must/solve';
 import { amountText } from './amount';
 import { bodyOf, coreSheet, type SheetDraft } from './draft';
@@ -32,13 +33,13 @@ function Scale({ draft, onApply }: { draft: SheetDraft; onApply: Apply }) {
     const scaled = scaleToFill(coreSheet(bodyOf(draft).body), wanted);
     if (!scaled) return setError('The sheet cannot be reckoned yet.');
     setError(undefined);
-    onApply({ ...withAmounts(draft, scaled.lines), boiled: scaled.boiledAwayL > 0 ? String(Number(scaled.boiledAwayL.toPrecision(4))) : draft.boiled, vessel: vessel.trim() === '' ? draft.vessel : vessel }, `Scaled to ${wanted} L.`);
+    onApply({ ...withAmounts(draft, scaled.lines), boiled: scaled.boiledAwayL > 0 ? String(Number(scaled.boiledAwayL.toPrecision(4))) : draft.boiled, vessel: vessel.trim() === '' ? draft.vessel : vessel }, `Scaled to ${litres(wanted)}.`);
   }
 
   return (
     <form onSubmit={scale} noValidate className="flex flex-wrap items-end gap-2">
-      <Field label="Must fills, with pulp" className="flex-1 basis-32" unit="L" inputMode="decimal" autoComplete="off" value={fill} onChange={(event) => setFill(event.target.value)} error={error} />
-      <Field label="That vessel holds" className="flex-1 basis-32" unit="L" inputMode="decimal" autoComplete="off" value={vessel} placeholder={draft.vessel || 'as it is'} onChange={(event) => setVessel(event.target.value)} />
+      <UnitField measure="volume" label="Must fills, with pulp" className="flex-1 basis-32" value={fill} onChange={(event) => setFill(event.target.value)} error={error} />
+      <UnitField measure="volume" label="That vessel holds" className="flex-1 basis-32" value={vessel} placeholder={draft.vessel || 'as it is'} onChange={(event) => setVessel(event.target.value)} />
       <Button type="submit">Scale</Button>
     </form>
   );
@@ -68,7 +69,11 @@ function Solve({ draft, onApply }: { draft: SheetDraft; onApply: Apply }) {
     <form onSubmit={solve} noValidate className="flex flex-col gap-3">
       <Choice label="Wanted" bare value={by} onChoose={setBy} options={[{ value: 'original', name: 'Original gravity' }, { value: 'abv', name: 'Strength, Balling' }]} />
       <div className="flex flex-wrap items-end gap-2">
-        <Field label="Wanted" className="flex-1 basis-28" unit={by === 'original' ? 'SG' : '% vol'} inputMode="decimal" autoComplete="off" value={wanted} onChange={(event) => setWanted(event.target.value)} error={error} />
+        {by === 'original' ? (
+          <UnitField measure="gravity" label="Wanted" className="flex-1 basis-28" value={wanted} onChange={(event) => setWanted(event.target.value)} error={error} />
+        ) : (
+          <Field label="Wanted" className="flex-1 basis-28" unit="% vol" inputMode="decimal" autoComplete="off" value={wanted} onChange={(event) => setWanted(event.target.value)} error={error} />
+        )}
         <Select label="By changing" className="min-w-0 flex-1 basis-40" value={line} onChange={(event) => setLine(event.target.value)}>
           <option value="">Choose a line</option>
           {draft.lines.map((item) => (

@@ -10,7 +10,7 @@ const PLACES = ['measured gravity', 'sample °C', 'must °C', 'pitched at', 'ves
 /** Above this many lines they stand in two columns, so that all of it stays on one page. */
 const ONE_COLUMN = 14;
 /** Most of the notes that are printed; what may stop the batch comes first. */
-const NOTES = 10;
+const NOTES = { few: 10, many: 6 } as const;
 const GRAVE: readonly string[] = ['preservative', 'tolerance', 'diastatic', 'volume', 'allergen'];
 
 /** What goes in, each with a box to tick and a place for what was weighed. */
@@ -55,7 +55,7 @@ export function WorkSheet({ must, timeZone }: { must: MustBody; timeZone: string
   const at = must.versions.find((item) => item.version === must.version)?.at ?? must.created_at;
   const dense = sheet.lines.length > ONE_COLUMN;
   const weight = (kind: string) => (GRAVE.includes(kind) ? GRAVE.indexOf(kind) : GRAVE.length);
-  const notes = [...(outcome?.notes ?? [])].sort((a, b) => weight(a.kind) - weight(b.kind)).slice(0, NOTES).map((note) => note.sentence);
+  const notes = [...(outcome?.notes ?? [])].sort((a, b) => weight(a.kind) - weight(b.kind)).slice(0, dense ? NOTES.many : NOTES.few).map((note) => note.sentence);
   const facts = outcome
     ? [
         ['original gravity', `${outcome.original_gravity.value.value.toFixed(3)} (${ends(outcome.original_gravity.value, 3)})`],
@@ -68,9 +68,9 @@ export function WorkSheet({ must, timeZone }: { must: MustBody; timeZone: string
     : [];
   return (
     <section className="work-sheet hidden px-2 print:block" aria-hidden>
-      <div className="flex items-baseline justify-between border-b-[1.5px] border-ink pb-1">
+      <div className="border-b-[1.5px] border-ink pb-1">
         <p className={sheet.name.length > 36 ? 'type-sub' : 'type-head'}>{sheet.name}</p>
-        <p className="type-label shrink-0 pl-6 text-right">
+        <p className="type-tick">
           {DRINK_WORDS[sheet.kind]}, version {must.version}, {dayName(Date.parse(at) / 1000, timeZone)}
         </p>
       </div>
@@ -83,7 +83,7 @@ export function WorkSheet({ must, timeZone }: { must: MustBody; timeZone: string
         ))}
       </dl>
       <Lines lines={sheet.lines} />
-      {sheet.method && <p className={`type-reason mt-2 whitespace-pre-line ${dense ? 'text-[0.6875rem]/[0.875rem]' : ''}`}>{sheet.method}</p>}
+      {sheet.method && <p className={`mt-2 whitespace-pre-line ${dense ? 'text-[0.75rem]/[1rem]' : 'text-[0.8125rem]/[1.125rem]'}`}>{sheet.method}</p>}
       <ol className="mt-2 columns-2 gap-x-6">
         {check.steps.map((step) => (
           <li key={step.key} className="grid break-inside-avoid grid-cols-[1rem_1fr] pb-0.5 text-[0.6875rem]/[0.875rem]">

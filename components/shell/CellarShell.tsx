@@ -30,7 +30,7 @@ export function CellarShell({ children }: { children: ReactNode }) {
       </a>
       <Header glance={glance} places={places} />
       <OfflineBar live={live} timeZone={glance.timeZone} />
-      <main key={drawnFor} id="page" tabIndex={-1} className="pb-20 outline-none strip:pb-0">
+      <main key={drawnFor} id="page" tabIndex={-1} className="pb-20 outline-none strip:pb-0 print:pb-0">
         {children}
       </main>
       <PhoneTabs places={places} />

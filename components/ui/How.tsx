@@ -39,11 +39,11 @@ export function HowBody({ how }: { how: HowAnswer }) {
 }
 
 /** Every figure can be asked "how?": its formula, what went into it, and where the formula is from. */
-export function How({ how, of, className = '' }: { how: HowAnswer; /** Which figure, for those who hear the page. */ of: string; className?: string }) {
+export function How({ how, of, named = false, className = '' }: { how: HowAnswer; /** Which figure, for those who hear the page. */ of: string; /** Said on the screen too, where several stand together. */ named?: boolean; className?: string }) {
   return (
     <details className={`group/how not-printed min-w-0 ${className}`}>
       <summary className="type-tick inline-flex min-h-11 cursor-pointer list-none items-center text-ink2 underline decoration-rule2 underline-offset-2 hover:text-ink strip:min-h-6 [&::-webkit-details-marker]:hidden">
-        how?<span className="heard-only"> {of}</span>
+        how?{named ? ` ${of}` : <span className="heard-only"> {of}</span>}
       </summary>
       <HowBody how={how} />
     </details>

@@ -1,0 +1,78 @@
+import { gravityText, litres, percent, points } from '@/components/batch/figures';
+import { How } from '@/components/ui/How';
+import { Sentence } from '@/components/ui/Sentence';
+import { State } from '@/components/ui/StateMark';
+import { Vessel } from '@/components/vessel/Vessel';
+import type { BatchBody } from '@/lib/contracts/batches';
+import type { Neck } from '@/lib/core/types';
+import type { Poured } from './poured';
+
+const ROOM = {
+  too_much: { state: 'Stop', word: 'Too much' },
+  air: { state: 'Check', word: 'Much air above it' },
+  fits: { state: 'Ready', word: 'It fits' },
+} as const;
+
+function roomWords({ litres: full, vesselL, room }: Poured): string {
+  if (room === 'too_much') return `${litres(full)} do not go into ${litres(vesselL)}.`;
+  const free = `${litres(full)} in ${litres(vesselL)}: ${litres(vesselL - full)} free.`;
+  return room === 'air' ? `${free} A drink that no longer works browns under air: top it up, or take a smaller vessel.` : free;
+}
+
+/** What a racking or topping up comes to, told before anything is poured. */
+export function Comes({ batch, neck, result, waits }: { batch: BatchBody; neck: Neck; result: Poured | null; /** What is still to be told. */ waits: string }) {
+  if (!result) {
+    return (
+      <section aria-label="What it comes to" className="border-l-[3px] border-rule2 pl-3">
+        <State state="Leave be" word="Not reckoned yet" />
+        <p className="type-verdict mt-1">{waits}</p>
+      </section>
+    );
+  }
+  const { moved } = result;
+  const after = moved?.reading ?? null;
+  const { state, word } = ROOM[result.room];
+  return (
+    <section aria-label="What it comes to" aria-live="polite" className="flex flex-col gap-3">
+      <div className="flex items-end gap-4">
+        <Vessel
+          silentPicture
+          height={118}
+          vessel={{ kind: batch.vessel_kind, neck, level: Math.min(1, result.litres / result.vesselL), drink: batch.drink_colour, clearness: 'clearing', krausen: false, lees: 'none', tag: batch.tag, silent: false }}
+        />
+        <div className="min-w-0 pb-1">
+          <State state={state} word={word} />
+          <p className="type-verdict mt-1">
+            <Sentence>{roomWords(result)}</Sentence>
+          </p>
+        </div>
+      </div>
+      {after && moved ? (
+        <div>
+          <p className="type-verdict-now">
+            <Sentence strong>{`${gravityText(after.gravity)}, ${percent(after.abvPercent)}`}</Sentence>
+          </p>
+          <p className="type-body">
+            <Sentence>
+              {Math.abs(moved.gravityChangePoints) < 0.05 && Math.abs(moved.abvChangePercent) < 0.05
+                ? 'Gravity and strength stay as they are.'
+                : `Gravity ${points(moved.gravityChangePoints)}, strength ${moved.abvChangePercent >= 0 ? '+' : '−'}${Math.abs(moved.abvChangePercent).toFixed(1)} %; as if it had begun at ${gravityText(after.effectiveOg)}.`}
+            </Sentence>
+          </p>
+          {moved.cautions.length > 0 && (
+            <ul className="mt-1 border-l-[3px] border-ochre pl-3">
+              {moved.cautions.map((caution) => (
+                <li key={caution} className="type-reason">
+                  <Sentence>{caution}</Sentence>
+                </li>
+              ))}
+            </ul>
+          )}
+          <How how={moved.how} of="what it comes to" />
+        </div>
+      ) : (
+        <p className="type-reason text-ink2">{waits}</p>
+      )}
+    </section>
+  );
+}
