@@ -2,6 +2,8 @@
 
 import { Choice } from '@/components/ui/Choice';
 import { Field, Select } from '@/components/ui/Field';
+import { Sentence } from '@/components/ui/Sentence';
+import { UnitField } from '@/components/units/UnitField';
 import type { BenchFacts } from '@/lib/contracts/bench';
 import { Bottles } from './Bottles';
 import type { BenchDraft, BenchErrors, SugarWay, WeighedSugar } from './draft';
@@ -45,20 +47,19 @@ export function BenchForm({ draft, errors, facts, onChange }: { draft: BenchDraf
     <div className="flex flex-col gap-4">
       <Bottles draft={draft} errors={errors} onChange={(bottles) => onChange({ bottles })} />
       <div className="grid grid-cols-2 gap-3 border-t pt-3">
-        <Field label="in the vessel" unit="L" inputMode="decimal" value={draft.volume} error={errors.volume_l} onChange={(event) => onChange({ volume: event.target.value })} />
-        <Field label="left on lees" unit="L" inputMode="decimal" value={draft.losses} error={errors.losses_l} onChange={(event) => onChange({ losses: event.target.value })} />
+        <UnitField measure="volume" label="in the vessel" value={draft.volume} error={errors.volume_l} onChange={(event) => onChange({ volume: event.target.value })} />
+        <UnitField measure="volume" label="left on lees" value={draft.losses} error={errors.losses_l} onChange={(event) => onChange({ losses: event.target.value })} />
       </div>
       <div className="grid grid-cols-2 gap-3 border-t pt-3">
-        <Field label="cellar" unit="°C" inputMode="decimal" value={draft.cellar} error={errors.cellar_c} onChange={(event) => onChange({ cellar: event.target.value })} />
-        <Field label="warmest they stand" unit="°C" inputMode="decimal" value={draft.warmest} error={errors.warmest_store_c} onChange={(event) => onChange({ warmest: event.target.value })} />
-        <Field
+        <UnitField measure="temperature" label="cellar" value={draft.cellar} error={errors.cellar_c} onChange={(event) => onChange({ cellar: event.target.value })} />
+        <UnitField measure="temperature" label="warmest they stand" value={draft.warmest} error={errors.warmest_store_c} onChange={(event) => onChange({ warmest: event.target.value })} />
+        <UnitField
+          measure="temperature"
           className="col-span-2"
           label="warmest since it finished"
-          unit="°C"
-          inputMode="decimal"
           value={draft.warmestSinceEnd}
           error={errors.warmest_since_end_c}
-          hint={measured === null ? 'No sensor measured it. If in doubt, say it colder: cold drink holds more gas.' : `The sensor measured ${measured.toFixed(1)} °C; the colder of the two is used.`}
+          hint={measured === null ? 'No sensor measured it. If in doubt, say it colder: cold drink holds more gas.' : <Sentence>{`The sensor measured ${measured.toFixed(1)} °C; the colder of the two is used.`}</Sentence>}
           onChange={(event) => onChange({ warmestSinceEnd: event.target.value })}
         />
       </div>

@@ -1,5 +1,6 @@
 'use client';
 
+import { degrees, gravityText } from '@/components/batch/figures';
 import { useMemo, useState } from 'react';
 import Link from 'next/link';
 import type { CSSProperties } from 'react';
@@ -91,7 +92,7 @@ function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
             </p>
             <p className="type-label text-ink2">
               {batch.tag !== null && `tag ${batch.tag}, `}
-              {done.gravity === null ? 'not read by hand' : `${done.gravity.toFixed(3)} by hand`}
+              {done.gravity === null ? 'not read by hand' : `${gravityText(done.gravity)} by hand`}
               <br />
               {done.remaining === null ? 'what may still ferment is not known' : `may still ferment: ${done.remaining.value.hi.toFixed(1)} points`}
             </p>
@@ -174,7 +175,7 @@ function BottlePictures({ bottle, verdict, request, timeZone, now }: { bottle: B
       </div>
       <div className="min-w-0 px-(--margin) pt-3 wide:border-l">
         <h3 className="type-label text-ink2">
-          <span className="font-bold text-ink">Week by week</span> at {request.warmestStoreC} °C
+          <span className="font-bold text-ink">Week by week</span> at <span className="fig">{degrees(request.warmestStoreC)}</span>
         </h3>
         <Weeks points={points} limit={limitOf(bottle)} top={scaleTop(bottle)} celsius={request.warmestStoreC} timeZone={timeZone} />
         <p className="type-reason pb-2 text-ink2">The course in between is a guess; the end is reckoned.</p>

@@ -1,5 +1,6 @@
 'use client';
 
+import { degrees } from '@/components/batch/figures';
 import { useId, useRef } from 'react';
 import { useWidth } from '@/components/ui/width';
 import type { BottlePicture } from '@/lib/core/bottling/bench';
@@ -35,9 +36,9 @@ export function Tubes({ bottle, lows }: { bottle: BottlePicture; /** Lower ends,
   const y = (bar: number) => TOP + (HEIGHT - TOP - FOOT) * (1 - bar / top);
   const base = y(0);
   const tubes: Tube[] = [
-    { name: 'as asked', where: `cellar, ${bottle.cellar.celsius} °C`, bar: bottle.cellar.bar, from: lows.cellar },
-    { name: 'as asked', where: `warmest, ${bottle.warm.celsius} °C`, bar: bottle.warm.bar, from: lows.warm },
-    { name: 'last sugar goes', where: `warmest, ${bottle.worst.celsius} °C`, bar: bottle.worst.bar, from: Math.min(bottle.warm.bar, bottle.worst.bar) },
+    { name: 'as asked', where: `cellar, ${degrees(bottle.cellar.celsius)}`, bar: bottle.cellar.bar, from: lows.cellar },
+    { name: 'as asked', where: `warmest, ${degrees(bottle.warm.celsius)}`, bar: bottle.warm.bar, from: lows.warm },
+    { name: 'last sugar goes', where: `warmest, ${degrees(bottle.worst.celsius)}`, bar: bottle.worst.bar, from: Math.min(bottle.warm.bar, bottle.worst.bar) },
   ];
   const step = (width - LEFT - 6) / 3;
   const tubeWidth = Math.min(50, step * 0.42);

@@ -1,5 +1,6 @@
 'use client';
 
+import { degrees } from '@/components/batch/figures';
 import { useRef } from 'react';
 import { dayName } from '@/components/charts/zone';
 import { useWidth } from '@/components/ui/width';
@@ -32,7 +33,7 @@ export function Weeks({ points, limit, top, celsius, timeZone }: { points: reado
         width={width}
         height={HEIGHT}
         role="img"
-        aria-label={`From ${day(first.at)} to ${day(last.at)} at ${celsius} °C: as asked up to ${last.bar.toFixed(1)} bar; if the last sugar goes up to ${last.worstBar.toFixed(1)} bar. ${over === null ? `It stays under ${limit.toFixed(1)} bar.` : `Over ${limit.toFixed(1)} bar from ${day(over)}.`}`}
+        aria-label={`From ${day(first.at)} to ${day(last.at)} at ${degrees(celsius)}: as asked up to ${last.bar.toFixed(1)} bar; if the last sugar goes up to ${last.worstBar.toFixed(1)} bar. ${over === null ? `It stays under ${limit.toFixed(1)} bar.` : `Over ${limit.toFixed(1)} bar from ${day(over)}.`}`}
       >
         {Array.from({ length: top + 1 }, (_, bar) => (
           <g key={bar}>

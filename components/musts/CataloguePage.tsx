@@ -12,16 +12,20 @@ import { ClientError } from '@/lib/client/fetcher';
 import { useMe } from '@/lib/client/me';
 import { removeFromCatalogue, useCatalogue } from '@/lib/client/musts';
 import type { CatalogueBody } from '@/lib/contracts/catalogue';
+import { INGREDIENT_KINDS } from '@/lib/core/must/ingredients';
+import { IngredientRow, YeastRow } from './CatalogueRow';
 import { draftOfIngredient, draftOfKind, draftOfYeast, emptyYeast } from './own-draft';
 import { IngredientOfOurs, YeastOfOurs } from './OwnForms';
-import { ends, KIND_WORDS } from './words';
+import { KIND_WORDS } from './words';
 
 type Ingredient = CatalogueBody['ingredients'][number];
 type Yeast = CatalogueBody['yeasts'][number];
-type Opened = { sort: 'ingredient'; item: Ingredient | null } | { sort: 'yeast'; item: Yeast | null };
+/** `id` null: a new one, perhaps begun from one of the program's. */
+type Opened = { sort: 'ingredient'; id: string | null; from: Ingredient | null } | { sort: 'yeast'; id: string | null; from: Yeast | null };
 
-const sugarWords = ({ kind, extract_share: share }: Ingredient) => (share.hi === 0 ? null : `${ends({ lo: 100 * share.lo, value: 100 * share.value, hi: 100 * share.hi }, 1)} ${kind === 'juice' ? '°Bx' : '% sugar'}`);
-const yeastWords = (yeast: Yeast) => `bears ${ends(yeast.tolerance_abv, 0)} % vol, ${temperatureNumber(yeast.temperature_c.min, 0)} to ${temperatureText(yeast.temperature_c.max, 0)}, nitrogen need ${yeast.nitrogen_need}${yeast.diastatic ? ', diastatic' : ''}`;
+
+/** One's own is told apart from what it was begun from. */
+const nameFor = ({ id, from }: Opened) => (id === null ? `${from?.name ?? ''}, ours` : (from?.name ?? ''));
 
 /** All that a must sheet can be written with: the program's and the cellar's own, which may be changed. */
 export function CataloguePage() {
@@ -43,39 +47,34 @@ export function CataloguePage() {
     }
   }
 
-  const row = (name: string, says: string, id: string | null, onChange: () => void) => (
-    <li key={id ?? name} className="flex flex-wrap items-center gap-x-5 gap-y-1 border-b border-rule px-(--margin) py-2">
-      <span className="min-w-0 flex-1 basis-64">
-        <span className="type-name-low block break-words">{name}</span>
-        <span className="type-label text-ink2">{says}</span>
-      </span>
-      {id !== null && <span className="type-label">own</span>}
-      {id !== null && write && (
-        <span className="flex gap-2">
-          <Button look="quiet" size="lane" aria-label={`Change ${name}`} onClick={onChange}>
-            Change
-          </Button>
+  /** Ours may be changed; of the program's one's own is made. */
+  const acts = (name: string, id: string | null, open: (id: string | null) => void) =>
+    write && (
+      <>
+        <Button look="quiet" size="lane" aria-label={id === null ? `Make ${name} our own` : `Change ${name}`} onClick={() => open(id)}>
+          {id === null ? 'Make it ours' : 'Change'}
+        </Button>
+        {id !== null && (
           <Button look="quiet" size="lane" aria-label={`Take ${name} out`} onClick={() => void takeOut(id)}>
             Take out
           </Button>
-        </span>
-      )}
-    </li>
-  );
+        )}
+      </>
+    );
 
   const ownFirst = <T extends { id: string | null; name: string }>(items: readonly T[]) => items.filter((item) => wanted(item.name)).toSorted((a, b) => Number(a.id === null) - Number(b.id === null));
   const ingredients = ownFirst(catalogue?.ingredients ?? []);
   const yeasts = ownFirst(catalogue?.yeasts ?? []);
   return (
     <>
-      <PageHead title="Catalogue" meta="Usual figures; a label or a measurement goes before them. A sheet keeps what it was written with.">
+      <PageHead title="Catalogue" meta="Sugar, what of it ferments, nitrogen: usual figures. A label or a measurement goes before them; a sheet keeps what it was written with.">
         <div className="flex flex-wrap gap-2">
           <LinkButton look="quiet" href="/musts">
             To the sheets
           </LinkButton>
-          {write && <Button onClick={() => setOpened({ sort: 'yeast', item: null })}>Add a yeast</Button>}
+          {write && <Button onClick={() => setOpened({ sort: 'yeast', id: null, from: null })}>Add a yeast</Button>}
           {write && (
-            <Button look="first" onClick={() => setOpened({ sort: 'ingredient', item: null })}>
+            <Button look="first" onClick={() => setOpened({ sort: 'ingredient', id: null, from: null })}>
               Add an ingredient
             </Button>
           )}
@@ -95,18 +94,43 @@ export function CataloguePage() {
         <EmptyState title="Nothing has that name">{write ? 'Add it as your own.' : 'A brewer can add it.'}</EmptyState>
       ) : (
         <>
-          <GroupBar word="Ingredients" note={`${ingredients.length}`} />
-          <ul>{ingredients.map((item) => row(item.name, [KIND_WORDS[item.kind].toLowerCase(), sugarWords(item), item.allergens.length > 0 ? `holds ${item.allergens.join(', ')}` : null].filter(Boolean).join(', '), item.id, () => setOpened({ sort: 'ingredient', item })))}</ul>
-          <GroupBar word="Yeasts" note={`${yeasts.length}`} />
-          <ul>{yeasts.map((item) => row(item.name, yeastWords(item), item.id, () => setOpened({ sort: 'yeast', item })))}</ul>
+          {INGREDIENT_KINDS.map((kind) => {
+            const items = ingredients.filter((item) => item.kind === kind);
+            return (
+              items.length > 0 && (
+                <section key={kind} aria-label={KIND_WORDS[kind]}>
+                  <GroupBar word={KIND_WORDS[kind]} note={`${items.length}`} />
+                  <ul>
+                    {items.map((item) => (
+                      <IngredientRow key={item.key} item={item}>
+                        {acts(item.name, item.id, (id) => setOpened({ sort: 'ingredient', id, from: item }))}
+                      </IngredientRow>
+                    ))}
+                  </ul>
+                </section>
+              )
+            );
+          })}
+          {yeasts.length > 0 && (
+            <section aria-label="Yeasts">
+              <GroupBar word="Yeasts" note={`${yeasts.length}`} />
+              <ul>
+                {yeasts.map((item) => (
+                  <YeastRow key={item.id ?? item.name} item={item}>
+                    {acts(item.name, item.id, (id) => setOpened({ sort: 'yeast', id, from: item }))}
+                  </YeastRow>
+                ))}
+              </ul>
+            </section>
+          )}
         </>
       )}
       {opened && (
-        <Sheet title={opened.item ? opened.item.name : opened.sort === 'yeast' ? 'A yeast of your own' : 'An ingredient of your own'} onClose={close}>
+        <Sheet title={opened.id !== null && opened.from ? opened.from.name : opened.sort === 'yeast' ? 'A yeast of your own' : 'An ingredient of your own'} onClose={close}>
           {opened.sort === 'yeast' ? (
-            <YeastOfOurs id={opened.item?.id ?? null} start={opened.item ? draftOfYeast(opened.item) : emptyYeast()} onKept={close} />
+            <YeastOfOurs id={opened.id} start={opened.from ? { ...draftOfYeast(opened.from), name: nameFor(opened) } : emptyYeast()} onKept={close} />
           ) : (
-            <IngredientOfOurs id={opened.item?.id ?? null} start={opened.item ? draftOfIngredient(opened.item) : draftOfKind('fruit', asked.trim())} onKept={close} />
+            <IngredientOfOurs id={opened.id} start={opened.from ? { ...draftOfIngredient(opened.from), name: nameFor(opened) } : draftOfKind('fruit', asked.trim())} onKept={close} />
           )}
         </Sheet>
       )}
