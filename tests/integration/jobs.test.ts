@@ -155,7 +155,7 @@ describe('a tick', () => {
     const hand = await buildMember('hand');
     const clock = clockAt(NOON + 3 * HOUR);
     const tickedAt = async (at: number) => {
-      const job = await createJob(hand, jobForm.parse({ title: 'Top up the airlocks', due_at: isoAt(NOON + HOUR), repeat_days: 7 }), clockAt(NOON));
+      const job = await createJob(hand, jobForm.parse({ title: 'Top up the airlocks', due_at: isoAt(NOON + HOUR), repeat_days: 7 }));
       await Job.update({ createdAt: new Date(NOON) }, { where: { id: job.id } });
       return (await doJob(hand, job.id, isoAt(at), clock)).done_at;
     };
