@@ -13,7 +13,7 @@ import { EmptyState, ErrorState } from '@/components/ui/Notice';
 import { useNow } from '@/components/ui/now';
 import { GroupBar, PageHead } from '@/components/ui/Page';
 import { State } from '@/components/ui/StateMark';
-import { lotsCsvUrl, useLots, type LotSearch } from '@/lib/client/lots';
+import { lotsCsvUrl, useLots, usePlaces, type LotSearch } from '@/lib/client/lots';
 import { useMe } from '@/lib/client/me';
 import type { LOT_SORTS, LotSummary } from '@/lib/contracts/lots';
 import { DRINK_KINDS, type DrinkKind } from '@/lib/core/types';
@@ -78,11 +78,13 @@ export function BookPage() {
   const [words, setWords] = useState('');
   const [state, setState] = useState<StateTab>('all');
   const [kind, setKind] = useState<DrinkKind | ''>('');
+  const [place, setPlace] = useState('');
+  const { places } = usePlaces();
   const [sort, setSort] = useState<Sort>('bottled');
   const q = useDeferredValue(words.trim());
-  const query: LotSearch = { state, sort, order: SORTS[sort].order, limit: 200, ...(q ? { q } : {}), ...(kind ? { kind } : {}) };
+  const query: LotSearch = { state, sort, order: SORTS[sort].order, limit: 200, ...(q ? { q } : {}), ...(kind ? { kind } : {}), ...(place ? { place } : {}) };
   const { lots, nextCursor, error, retry } = useLots(query);
-  const asked = q !== '' || kind !== '' || state !== 'all';
+  const asked = q !== '' || kind !== '' || place !== '' || state !== 'all';
   return (
     <>
       <PageHead title="Cellar book" meta={lots && `${lots.length}${nextCursor ? ' or more' : ''} ${lots.length === 1 ? 'lot' : 'lots'}, ${lots.reduce((sum, lot) => sum + lot.counts.left, 0)} bottles left`}>
@@ -100,6 +102,16 @@ export function BookPage() {
             </option>
           ))}
         </Select>
+        {(places ?? []).length > 0 && (
+          <Select label="place" value={place} onChange={(event) => setPlace(event.target.value)} className="w-44 max-strip:w-[calc(50%-0.5rem)]">
+            <option value="">every place</option>
+            {(places ?? []).map((one) => (
+              <option key={one.id} value={one.id}>
+                {one.name}
+              </option>
+            ))}
+          </Select>
+        )}
         <Select label="order" value={sort} onChange={(event) => setSort(event.target.value as Sort)} className="w-40 max-strip:w-[calc(50%-0.5rem)]">
           {(Object.keys(SORTS) as Sort[]).map((one) => (
             <option key={one} value={one}>

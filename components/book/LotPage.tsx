@@ -3,7 +3,6 @@
 import Link from 'next/link';
 import { useState, type CSSProperties } from 'react';
 import { Sheet } from '@/components/batch/Sheet';
-import { BottleDrawing } from '@/components/bench/BottleDrawing';
 import { sizeWords } from '@/components/bench/words';
 import { drinkHex } from '@/components/charts/palette';
 import { Shares } from '@/components/share/Shares';
@@ -12,7 +11,6 @@ import { Tastings } from '@/components/tasting/Tastings';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Facts, type Fact } from '@/components/ui/Facts';
 import { Haze } from '@/components/ui/Haze';
-import { How } from '@/components/ui/How';
 import { ErrorState, FormError } from '@/components/ui/Notice';
 import { useNow } from '@/components/ui/now';
 import { GroupBar, PageHead } from '@/components/ui/Page';
@@ -21,12 +19,12 @@ import { ClientError } from '@/lib/client/fetcher';
 import { undoOpening, useLot } from '@/lib/client/lots';
 import { useMe } from '@/lib/client/me';
 import type { LotBody } from '@/lib/contracts/lots';
-import { BOTTLES, CLOSURE_CATALOGUE } from '@/lib/core/bottling/bottles';
 import { BenchRecord } from './BenchRecord';
 import { Caution, Lifted } from './Caution';
 import { EditLot } from './EditLot';
+import { LotBottles } from './LotBottles';
 import { Serve } from './Serve';
-import { costWords, dayWords, leftWords, money, OPENING_WORDS, SPARKLE_WORDS, strengthWords } from './words';
+import { costWords, dayWords, leftWords, OPENING_WORDS, SPARKLE_WORDS, strengthWords } from './words';
 
 /** One lot of the cellar book. */
 export function LotPage({ id }: { id: string }) {
@@ -73,7 +71,7 @@ export function LotPage({ id }: { id: string }) {
       </div>
       <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px]">
         <div className="min-w-0">
-          <Bottles lot={lot} />
+          <LotBottles lot={lot} />
           <Tastings lotId={lot.id} timeZone={timeZone} now={now} mayTaste={may('tastings.write')} />
           <Openings lot={lot} day={day} mayUndo={may('lots.serve')} />
         </div>
@@ -102,44 +100,12 @@ function factsOf(lot: LotBody, day: (at: string) => string): Fact[] {
     { name: 'left', says: `${lot.counts.left} of ${lot.counts.bottled}` },
     { name: 'bottled', says: day(lot.bottled_at) },
     { name: 'ready from', says: lot.ready ? `${day(lot.ready_from)}, ready` : day(lot.ready_from), how: lot.how.ready },
-    { name: 'sparkle', says: SPARKLE_WORDS[lot.sparkle] },
+    { name: 'sparkle', says: SPARKLE_WORDS[lot.sparkle], how: lot.how.sparkle },
     { name: 'strength', says: strengthWords(lot.abv_percent), how: lot.how.strength },
-    { name: 'gravity', says: `${lot.original_gravity === null ? '?' : gravityText(lot.original_gravity)} to ${lot.final_gravity === null ? '?' : gravityText(lot.final_gravity)}` },
+    { name: 'gravity', says: `${lot.original_gravity === null ? '?' : gravityText(lot.original_gravity)} to ${lot.final_gravity === null ? '?' : gravityText(lot.final_gravity)}`, how: lot.how.gravity },
     { name: 'opened, given', says: `${lot.counts.opened}, ${lot.counts.given}` },
     { name: 'cost a litre', says: costWords(lot), how: lot.how.cost },
   ];
-}
-
-function Bottles({ lot }: { lot: LotBody }) {
-  return (
-    <section aria-label="Bottles">
-      <GroupBar word="Bottles" note={leftWords(lot.counts)} />
-      <ul>
-        {lot.bottles.map((bottle) => (
-          <li key={bottle.id} className="flex items-center gap-4 border-b px-(--margin) py-2">
-            <BottleDrawing kind={bottle.kind} filled={bottle.left > 0} height={52} />
-            <div className="min-w-0 flex-1">
-              <p className="type-name-low">
-                {sizeWords(bottle.size_ml)} {BOTTLES[bottle.kind].name}, {CLOSURE_CATALOGUE[bottle.closure].name}
-              </p>
-              <p className="type-label text-ink2">
-                {bottle.rating === 'never' ? 'for still drink' : `holds ${bottle.rating.toFixed(1)} bar${bottle.rating_confirmed ? '' : ', not confirmed'}`}; at most {bottle.cellar_bar.toFixed(1)} bar in the cellar, {bottle.worst_bar.toFixed(1)} at worst
-                {bottle.cost_each && `; ${money(bottle.cost_each)} each${lot.cost_known ? '' : ' or more'}`}
-              </p>
-              <div className="flex flex-wrap gap-x-4">
-                <How how={bottle.how.cellar} of={`pressure in the cellar, ${sizeWords(bottle.size_ml)}`} />
-                <How how={bottle.how.worst} of={`pressure at worst, ${sizeWords(bottle.size_ml)}`} />
-              </div>
-              <p className="type-label">
-                {bottle.left} of {bottle.bottled} left
-                {bottle.stands.filter((stand) => stand.count > 0).map((stand) => `; ${stand.count} in ${stand.place?.name ?? 'no named place'}`)}
-              </p>
-            </div>
-          </li>
-        ))}
-      </ul>
-    </section>
-  );
 }
 
 function Openings({ lot, day, mayUndo }: { lot: LotBody; day: (at: string) => string; mayUndo: boolean }) {

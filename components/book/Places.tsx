@@ -1,44 +1,29 @@
 'use client';
 
-import { useState, type FormEvent } from 'react';
-import { degrees, typedNumber } from '@/components/batch/figures';
-import { Button } from '@/components/ui/Button';
-import { Field } from '@/components/ui/Field';
-import { UnitField } from '@/components/units/UnitField';
+import { useState } from 'react';
+import { degrees } from '@/components/batch/figures';
 import { Haze } from '@/components/ui/Haze';
 import { FormError } from '@/components/ui/Notice';
 import { State } from '@/components/ui/StateMark';
 import { ClientError } from '@/lib/client/fetcher';
-import { createPlace, removePlace, usePlaces } from '@/lib/client/lots';
+import { createPlace, removePlace, updatePlace, usePlaces } from '@/lib/client/lots';
+import type { PlaceBody } from '@/lib/contracts/lots';
+import { PlaceForm } from './PlaceForm';
+
+const LINK = 'type-label min-h-8 text-ink2 underline underline-offset-4 max-strip:min-h-11';
 
 /** Places with their room; full is said, not only drawn. */
 export function Places({ mayManage }: { mayManage: boolean }) {
   const { places, error } = usePlaces();
-  const [name, setName] = useState('');
-  const [room, setRoom] = useState('');
-  const [warm, setWarm] = useState('');
-  const [errors, setErrors] = useState<Record<string, string[]>>({});
+  const [changed, setChanged] = useState<string | null>(null);
   const [failed, setFailed] = useState<string | null>(null);
 
-  async function attempt(act: () => Promise<unknown>) {
-    setErrors({});
+  async function remove(place: PlaceBody) {
     setFailed(null);
     try {
-      await act();
-      return true;
+      await removePlace(place.id);
     } catch (problem) {
-      const told = problem instanceof ClientError ? problem : null;
-      setErrors(told?.fields ?? {});
-      if (!told || Object.keys(told.fields).length === 0) setFailed(told?.message ?? 'It was not changed. Try again.');
-      return false;
-    }
-  }
-  async function add(event: FormEvent) {
-    event.preventDefault();
-    if (await attempt(() => createPlace({ name, capacity: typedNumber(room), temperature_c: typedNumber(warm) }))) {
-      setName('');
-      setRoom('');
-      setWarm('');
+      setFailed(problem instanceof ClientError ? problem.message : 'It was not taken away. Try again.');
     }
   }
 
@@ -48,36 +33,58 @@ export function Places({ mayManage }: { mayManage: boolean }) {
     <>
       {places.length === 0 && <p className="type-body border-b px-(--margin) py-3 text-ink2">No place is named yet.</p>}
       <ul>
-        {places.map((place) => {
-          const full = place.capacity !== null && place.bottles >= place.capacity;
-          return (
-            <li key={place.id} className="flex flex-wrap items-center gap-x-5 gap-y-1 border-b border-rule px-(--margin) py-2">
-              <span className="type-name-low min-w-40">{place.name}</span>
-              <span className="type-label text-ink2">
-                {place.capacity === null ? `${place.bottles} bottles` : `${place.bottles} of ${place.capacity} bottles`}
-                {place.temperature_c !== null && `, up to ${degrees(place.temperature_c)}`}
-              </span>
-              {full && <State state="Check" word="Full" size={13} />}
-              {mayManage && place.bottles === 0 && (
-                <button type="button" aria-label={`Take ${place.name} away`} onClick={() => void attempt(() => removePlace(place.id))} className="type-label ml-auto min-h-8 text-ink2 underline underline-offset-4 max-strip:min-h-11">
-                  Take away
-                </button>
-              )}
-            </li>
-          );
-        })}
+        {places.map((place) => (
+          <li key={place.id} className="border-b border-rule">
+            {changed === place.id ? (
+              <PlaceForm
+                place={place}
+                onLeave={() => setChanged(null)}
+                onSend={async (input) => {
+                  await updatePlace(place.id, input);
+                  setChanged(null);
+                }}
+              />
+            ) : (
+              <div className="flex flex-wrap items-center gap-x-5 gap-y-1 px-(--margin) py-2">
+                <span className="type-name-low min-w-40 break-words">{place.name}</span>
+                <Standing place={place} />
+                {mayManage && (
+                  <span className="ml-auto flex gap-4">
+                    <button type="button" aria-label={`Change ${place.name}`} onClick={() => setChanged(place.id)} className={LINK}>
+                      Change
+                    </button>
+                    {place.bottles === 0 && (
+                      <button type="button" aria-label={`Take ${place.name} away`} onClick={() => void remove(place)} className={LINK}>
+                        Take away
+                      </button>
+                    )}
+                  </span>
+                )}
+              </div>
+            )}
+          </li>
+        ))}
       </ul>
       {failed && <FormError>{failed}</FormError>}
       {mayManage && (
-        <form onSubmit={(event) => void add(event)} className="flex flex-wrap items-start gap-3 border-b px-(--margin) py-3">
-          <Field label="new place" value={name} error={errors.name?.[0]} onChange={(event) => setName(event.target.value)} className="w-56" />
-          <Field label="holds" unit="bottles" placeholder="any" inputMode="numeric" value={room} error={errors.capacity?.[0]} onChange={(event) => setRoom(event.target.value)} className="w-36" />
-          <UnitField measure="temperature" label="warmest" placeholder="?" value={warm} error={errors.temperature_c?.[0]} onChange={(event) => setWarm(event.target.value)} className="w-32" />
-          <Button type="submit" className="mt-[22px]" disabled={name.trim() === ''}>
-            Add
-          </Button>
-        </form>
+        <div className="border-b">
+          <PlaceForm place={null} onSend={createPlace} />
+        </div>
       )}
+    </>
+  );
+}
+
+/** How many stand there, of how many that fit. */
+function Standing({ place: { bottles, capacity, temperature_c } }: { place: PlaceBody }) {
+  const full = capacity !== null && bottles >= capacity;
+  return (
+    <>
+      <span className="type-label text-ink2">
+        {capacity === null ? `${bottles} bottles` : `${bottles} of ${capacity} bottles`}
+        {temperature_c !== null && `, up to ${degrees(temperature_c)}`}
+      </span>
+      {full && <State state="Check" word="Full" size={13} />}
     </>
   );
 }

@@ -56,7 +56,16 @@ export function CompareChart({ curves, measure, span: asked, onSpan }: { curves:
   return (
     <>
       <div className="flex flex-wrap items-center gap-x-4 gap-y-1 px-(--margin) pb-1">
-        <p className="type-label text-ink2">{at === null ? 'Move over the curves to read them; drag over a part to see it closer.' : `day ${at.toFixed(1)}`}</p>
+        <p className="type-label text-ink2">
+          {at !== null ? (
+            `day ${at.toFixed(1)}`
+          ) : (
+            <>
+              Move over the curves to read them; <span className="max-strip:hidden">drag over a part</span>
+              <span className="strip:hidden">two fingers</span> to see it closer.
+            </>
+          )}
+        </p>
         {drawn.length > 0 && (
           <div className="ml-auto flex gap-1">
             <ZoomTools span={span} whole={whole} onSpan={onSpan} />

@@ -4,10 +4,12 @@ import { useState, type CSSProperties } from 'react';
 import { dayWords, SPARKLE_WORDS, strengthWords } from '@/components/book/words';
 import { drinkHex } from '@/components/charts/palette';
 import { TastingSheet } from '@/components/tasting/TastingSheet';
-import { FOUND_WORDS, spreadWords } from '@/components/tasting/words';
+import { FOUND_WORDS, HOW_TASTED, spreadWords } from '@/components/tasting/words';
 import { Button } from '@/components/ui/Button';
+import { Facts, type Fact } from '@/components/ui/Facts';
 import { Select } from '@/components/ui/Field';
 import { Haze } from '@/components/ui/Haze';
+import { How } from '@/components/ui/How';
 import { Wordmark } from '@/components/ui/Mark';
 import { ErrorState } from '@/components/ui/Notice';
 import { useNow } from '@/components/ui/now';
@@ -49,11 +51,11 @@ export function SharedPage({ token }: { token: string }) {
 
 function Shared({ shared, token, now }: { shared: SharedBatch; token: string; now: number }) {
   const day = (at: string) => dayWords(at, ZONE, now);
-  const facts: [string, string][] = [
-    ['original gravity', shared.original_gravity?.toFixed(3) ?? 'not known'],
-    ['gravity', shared.gravity?.toFixed(3) ?? 'not known'],
-    ['strength', strengthWords(shared.abv_percent)],
-    ['pitched', shared.pitched_at ? day(shared.pitched_at) : 'not yet'],
+  const facts: Fact[] = [
+    { name: 'original gravity', says: shared.original_gravity?.toFixed(3) ?? 'not known' },
+    { name: 'gravity', says: shared.gravity?.toFixed(3) ?? 'not known' },
+    { name: 'strength', says: strengthWords(shared.abv_percent), how: shared.how },
+    { name: 'pitched', says: shared.pitched_at ? day(shared.pitched_at) : 'not yet' },
   ];
   return (
     <div className="drink" style={{ '--drink': drinkHex(shared.drink_colour) } as CSSProperties}>
@@ -67,14 +69,7 @@ function Shared({ shared, token, now }: { shared: SharedBatch; token: string; no
       <div className="px-(--margin)">
         <FallPicture shared={shared} now={now} />
       </div>
-      <dl className="grid grid-cols-2 border-y strip:grid-cols-4">
-        {facts.map(([name, figure]) => (
-          <div key={name} className="border-r border-rule px-(--margin) py-2">
-            <dt className="type-label text-ink2">{name}</dt>
-            <dd className="font-mono text-[0.9375rem] font-semibold">{figure}</dd>
-          </div>
-        ))}
-      </dl>
+      <Facts facts={facts} columns="grid-cols-2 strip:grid-cols-4" className="border-t" />
       {shared.lots.map((lot) => (
         <section key={lot.id} aria-label={`Lot ${lot.code}`}>
           <GroupBar word={`${lot.name}, lot ${lot.code}`} note={`bottled ${day(lot.bottled_at)}`} />
@@ -91,7 +86,9 @@ function Shared({ shared, token, now }: { shared: SharedBatch; token: string; no
               {SPARKLE_WORDS[lot.sparkle]}, {strengthWords(lot.abv_percent)}
               {lot.allergens && `. ${lot.allergens}`}
             </p>
+            <How how={lot.how} of={`strength of lot ${lot.code}`} />
             <p className="type-label pt-1">tasted: {spreadWords(lot.tastings.score, 10)}</p>
+            {lot.tastings.score && <How how={HOW_TASTED} of={`score of lot ${lot.code}`} />}
           </div>
           <ul>
             {lot.words.map((said, index) => (

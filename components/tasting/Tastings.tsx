@@ -6,10 +6,11 @@ import { dayWords } from '@/components/book/words';
 import { Photos } from '@/components/photos/Photos';
 import { Button } from '@/components/ui/Button';
 import { Haze } from '@/components/ui/Haze';
+import { How } from '@/components/ui/How';
 import { GroupBar } from '@/components/ui/Page';
 import { createTasting, removeTasting, useTastings } from '@/lib/client/tastings';
 import { TastingSheet } from './TastingSheet';
-import { ASPECTS, FOUND_WORDS, spreadWords, type Found } from './words';
+import { ASPECTS, FOUND_WORDS, HOW_TASTED, spreadWords, type Found } from './words';
 
 /** What people found in a lot: the average with its spread, and each note. */
 export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; timeZone: string; now: number; mayTaste: boolean }) {
@@ -27,7 +28,10 @@ export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; ti
       ) : (
         <>
           <div className="flex flex-wrap items-center gap-x-6 gap-y-2 border-b px-(--margin) py-2">
-            <p className="type-fig-lg">{spreadWords(summary.score, 10)}</p>
+            <div>
+              <p className="type-fig-lg">{spreadWords(summary.score, 10)}</p>
+              {summary.count > 0 && <How how={HOW_TASTED} of="averages of the notes" />}
+            </div>
             <dl className="type-label flex flex-wrap gap-x-5 text-ink2">
               {ASPECTS.map((aspect) => (
                 <div key={aspect}>

@@ -31,6 +31,8 @@ export interface LotFilter {
   cellarId: string;
   id?: string;
   q?: string;
+  /** Whom bottles were given to, and what was noted with it, is searched too. */
+  searchGiven?: boolean;
   kind?: string;
   placeId?: string;
   batchId?: string;
@@ -66,7 +68,7 @@ export function findLots(filter: LotFilter, transaction?: Transaction): Promise<
   if (filter.kind !== undefined) conditions.push('b.kind = $kind');
   if (filter.batchId !== undefined) conditions.push('l.batch_id = $batchId');
   if (filter.placeId !== undefined) conditions.push('exists (select 1 from bottle_stands s join lot_bottles x on x.id = s.lot_bottle_id where x.lot_id = l.id and s.place_id = $placeId)');
-  if (filter.q) conditions.push(`(l.name ilike '%' || $q || '%' or l.code ilike '%' || $q || '%' or b.name ilike '%' || $q || '%' or l.note ilike '%' || $q || '%')`);
+  if (filter.q) conditions.push(`(l.name ilike '%' || $q || '%' or l.code ilike '%' || $q || '%' or b.name ilike '%' || $q || '%' or l.note ilike '%' || $q || '%'${filter.searchGiven ? ` or exists (select 1 from openings o where o.lot_id = l.id and o.removed_at is null and (o.given_to ilike '%' || $q || '%' or o.note ilike '%' || $q || '%'))` : ''})`);
   const direction = filter.order === 'asc' ? 'asc' : 'desc';
   return database().query<LotRow>(
     `select l.id, l.batch_id as "batchId", l.code, l.name, l.bottled_at as "bottledAt", l.ready_from as "readyFrom", l.volume_l as "volumeL", l.original_gravity as "originalGravity", l.final_gravity as "finalGravity",

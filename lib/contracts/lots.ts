@@ -39,7 +39,7 @@ export const lotBottleSchema = z.object({
   cellar_bar: z.number(),
   warm_bar: z.number(),
   worst_bar: z.number(),
-  how: z.object({ cellar: howSchema, worst: howSchema }),
+  how: z.object({ cellar: howSchema, warm: howSchema, worst: howSchema }),
   bottled: z.number().int(),
   left: z.number().int(),
   stands: z.array(z.object({ place: placeName, count: z.number().int() })),
@@ -104,7 +104,7 @@ export const lotSchema = z.object({
   /** What is written on the lot itself. */
   own_next_time: z.string().nullable(),
   note: z.string().nullable(),
-  how: z.object({ strength: howSchema, cost: howSchema, ready: howSchema }),
+  how: z.object({ strength: howSchema, gravity: howSchema, sparkle: howSchema, cost: howSchema, ready: howSchema }),
   cost: z.object({ total: rangeSchema.nullable(), known: z.boolean(), other: z.number().nullable() }),
 });
 export type LotBody = z.infer<typeof lotSchema>;

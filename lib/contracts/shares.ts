@@ -3,7 +3,7 @@ import { DRINK_KINDS } from '../core/types';
 import { ENTRY_KINDS, seriesSchema } from './batches';
 import { curvePointSchema } from './assessment';
 import { id } from './common';
-import { rangeSchema } from './figures';
+import { howSchema, rangeSchema } from './figures';
 import { linkToken } from './jobs';
 import { LOT_SPARKLES } from './lots';
 import { SPARKLES_FOUND, tastingSummary } from './tastings';
@@ -50,6 +50,8 @@ export const sharedBatch = z.object({
   original_gravity: z.number().nullable(),
   gravity: z.number().nullable(),
   abv_percent: rangeSchema.nullable(),
+  /** Of the strength. */
+  how: howSchema.nullable(),
   series: seriesSchema,
   curve: z.array(curvePointSchema),
   entries: z.array(z.object({ kind: z.enum(ENTRY_KINDS), at: z.string(), gravity: z.number().nullable() })),
@@ -63,6 +65,7 @@ export const sharedBatch = z.object({
       ready: z.boolean(),
       sparkle: z.enum(LOT_SPARKLES),
       abv_percent: rangeSchema.nullable(),
+      how: howSchema,
       allergens: z.string().nullable(),
       caution: z.boolean(),
       tastings: tastingSummary,

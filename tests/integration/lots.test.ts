@@ -169,13 +169,18 @@ describe('the cellar book', () => {
     const names = async (query: Record<string, unknown>) => (await listLots(brewer, lotQuery.parse(query), clock)).items.map((lot) => lot.name);
     expect(await names({ sort: 'name', order: 'asc' })).toEqual(['100 % crab', 'Alder perry', 'Bramble mead']);
     expect(await names({ q: 'bramble' })).toEqual(['Bramble mead']);
+    // Whom one was given to is found by those who may read it, and by no guest.
+    await openBottles(brewer, a.id, opened(a.bottles[0]!.id, { kind: 'given', to: 'Aunt Oda', place_id: shelf.id }), clock);
+    expect(await names({ q: 'aunt oda' })).toEqual(['Alder perry']);
+    const guest = await buildMember('guest', { cellarId: brewer.cellarId });
+    expect((await listLots(guest, lotQuery.parse({ q: 'aunt oda' }), clock)).items).toEqual([]);
     // A sign of the pattern language is a letter like any other.
     expect(await names({ q: '%' })).toEqual(['100 % crab']);
     expect(await names({ kind: 'mead' })).toEqual(['Bramble mead']);
     expect(await names({ place: shelf.id })).toEqual(['Alder perry']);
     expect(await names({ state: 'empty' })).toEqual(['100 % crab']);
     expect(await names({ state: 'ready' })).toEqual([]);
-    expect(await names({ sort: 'left', order: 'asc' })).toEqual(['100 % crab', ...[a, b].sort((x, y) => (x.id < y.id ? -1 : 1)).map((lot) => lot.name)]);
+    expect(await names({ sort: 'left', order: 'asc' })).toEqual(['100 % crab', a.name, b.name]);
     const first = await listLots(brewer, lotQuery.parse({ sort: 'name', order: 'asc', limit: 2 }), clock);
     expect(first.items).toHaveLength(2);
     expect(await names({ sort: 'name', order: 'asc', limit: 2, cursor: first.next_cursor })).toEqual(['Bramble mead']);

@@ -10,7 +10,7 @@ import type { LotBody } from '@/lib/contracts/lots';
 import type { BenchOverridden, BenchRequest, BenchSafe } from '@/lib/core/bottling/bench';
 import { readyFrom } from '@/lib/core/bottling/conditioning';
 import { primes } from '@/lib/core/bottling/judge';
-import { judgeBench, overrideStop, REASON_MIN_LETTERS } from '@/lib/core/bottling/verdict';
+import { judgeBench, overrideStop } from '@/lib/core/bottling/verdict';
 import { strengthByMethods } from '@/lib/core/strength/methods';
 import { times, within, type Range } from '@/lib/core/units/range';
 import { ConflictError, InvalidError } from '@/lib/errors';
@@ -24,6 +24,8 @@ import { answerJobs } from '../jobs/answer';
 import { getLot } from '../lots/get';
 import type { KeptBench, KeptCost, KeptPressure } from '../lots/kept';
 import { lotJobs } from '../lots/jobs';
+import { writtenReason } from '../lots/reason';
+import { LIGHT_FROM, SPARKLING_FROM } from '../lots/sparkle';
 import { roomFor } from '../places/room';
 import { takeOut } from '../sensors/place';
 import { presentDose } from './present';
@@ -32,9 +34,6 @@ import { benchRequest } from './request';
 type Allowed = BenchSafe | BenchOverridden;
 /** Half a division of a hydrometer. */
 const READING_DOUBT = 0.0005;
-/** Gas from which drink is called sparkling, and lightly so, volumes: half way between what is usual for each. Our own rule. */
-const SPARKLING_FROM = 2.4;
-const LIGHT_FROM = 1.4;
 
 /**
  * The one gate to a filled bottle: judged here, from the log, whatever the screen
@@ -46,9 +45,8 @@ function allow(actor: Actor, request: BenchRequest, reason: string | null, now: 
   if (verdict.verdict === 'safe') return verdict;
   if (reason === null) throw new ConflictError(`${verdict.headline}. ${verdict.sentence}`);
   authorize(actor, 'lots.override');
-  const put = overrideStop(request, { reason, by: actor.personId, at: now });
+  const put = overrideStop(request, { reason: writtenReason('override_reason', reason), by: actor.personId, at: now });
   if (put.verdict === 'overridden') return put;
-  if (put.why === 'reason_too_short') throw new InvalidError('The reason says too little.', { override_reason: [`write why, in at least ${REASON_MIN_LETTERS} letters: it stays on the lot`] });
   throw new ConflictError(`No reason puts this aside. ${put.problems.find((problem) => !problem.overridable)?.sentence ?? verdict.sentence}`);
 }
 

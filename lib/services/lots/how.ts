@@ -5,9 +5,10 @@ import { how } from '@/lib/core/how/how';
 import { practice, SOURCES } from '@/lib/core/how/sources';
 import type { LotRow } from '@/db/queries/lots';
 import type { KeptBench, KeptCost, KeptPressure } from './kept';
+import { LIGHT_FROM, SPARKLING_FROM } from './sparkle';
 
 /** Where the figures of a lot come from, as they were kept on the day it was bottled. */
-export function howOfLot(row: LotRow, bench: KeptBench, cost: KeptCost): LotBody['how'] {
+export function howOfLot(row: Pick<LotRow, 'originalGravity' | 'finalGravity' | 'volumeL'>, bench: KeptBench, cost: KeptCost): LotBody['how'] {
   const { dose } = bench.shown;
   const sugar = dose.way === 'weighed' ? `${dose.total_g.toFixed(0)} g of ${dose.sugar.name}` : dose.way === 'drops' ? `${dose.total_drops} drops` : 'none';
   return {
@@ -16,6 +17,18 @@ export function howOfLot(row: LotRow, bench: KeptBench, cost: KeptCost): LotBody
         ['original gravity, with what was added', row.originalGravity, 'SG'],
         ['final gravity', row.finalGravity, 'SG'],
         ['sugar for fizz', sugar, ''],
+      ]),
+    ),
+    gravity: snakeKeys(
+      how('first: the must’s gravity with all the sugar that went in until it was bottled; last: the hydrometer reading that it was bottled by', SOURCES.told, [
+        ['original gravity, with what was added', row.originalGravity, 'SG'],
+        ['final gravity', row.finalGravity, 'SG'],
+      ]),
+    ),
+    sparkle: snakeKeys(
+      how(`sparkling from ${SPARKLING_FROM} volumes of gas, lightly sparkling from ${LIGHT_FROM}, by what was wanted; where nothing was, by what is likely in the bottle`, SOURCES.ownRule, [
+        ['wanted', bench.shown.wanted_volumes, 'volumes'],
+        ['likely in the bottle', bench.shown.volumes && Number(bench.shown.volumes.value.toFixed(2)), 'volumes'],
       ]),
     ),
     cost: snakeKeys(
@@ -39,6 +52,7 @@ export function howOfLot(row: LotRow, bench: KeptBench, cost: KeptCost): LotBody
 export function howOfPressure({ shown, drink }: KeptBench, pressure: KeptPressure): LotBody['bottles'][number]['how'] {
   return {
     cellar: snakeKeys(drinkPressure(pressure.volumes, shown.cellar_c, drink).how),
+    warm: snakeKeys(drinkPressure(pressure.volumes, shown.warmest_store_c, drink).how),
     worst: snakeKeys(drinkPressure(pressure.worstVolumes, shown.warmest_store_c, drink).how),
   };
 }

@@ -1,6 +1,6 @@
 import { findLots, type LotFilter } from '@/db/queries/lots';
 import { authorize } from '@/lib/auth/authorize';
-import type { Actor } from '@/lib/auth/policies';
+import { may, type Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
 import type { LotList, LotQuery } from '@/lib/contracts/lots';
 import { InvalidError } from '@/lib/errors';
@@ -16,7 +16,7 @@ function decode(cursor: string | undefined): number {
   return offset;
 }
 
-export const lotFilter = (actor: Actor, query: LotQuery, now: Date): Omit<LotFilter, 'limit'> => ({ cellarId: actor.cellarId, q: query.q, kind: query.kind, placeId: query.place, batchId: query.batch, state: query.state, sort: query.sort, order: query.order, now });
+export const lotFilter = (actor: Actor, query: LotQuery, now: Date): Omit<LotFilter, 'limit'> => ({ cellarId: actor.cellarId, q: query.q, searchGiven: may(actor.role, 'lots.serve'), kind: query.kind, placeId: query.place, batchId: query.batch, state: query.state, sort: query.sort, order: query.order, now });
 
 /** The cellar book, searched, filtered and sorted. */
 export async function listLots(actor: Actor, query: LotQuery, clock: Clock = systemClock): Promise<LotList> {

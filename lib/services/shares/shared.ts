@@ -6,6 +6,7 @@ import { countTry } from '@/db/queries/sign-in-tries';
 import { hashLinkToken } from '@/lib/auth/link-tokens';
 import { systemClock, type Clock } from '@/lib/clock';
 import { ENTRY_KINDS } from '@/lib/contracts/batches';
+import { snakeKeys } from '@/lib/contracts/case';
 import type { SharedBatch } from '@/lib/contracts/shares';
 import type { GuestTasting } from '@/lib/contracts/tastings';
 import { ForbiddenError, NotFoundError, ThrottledError } from '@/lib/errors';
@@ -14,6 +15,8 @@ import { suggestionOf } from '../drink/name';
 import { drinkState } from '../drink/state';
 import { namesOf } from '../entries/names';
 import { iso, isoOrNull } from '../iso';
+import { howOfLot } from '../lots/how';
+import { keptBench, keptCost } from '../lots/kept';
 import { lotFacts } from '../labels/facts';
 import { summaryOf } from '../tastings/summary';
 import { writeTasting } from '../tastings/write';
@@ -59,6 +62,7 @@ export async function getShared(token: string, clock: Clock = systemClock): Prom
     original_gravity: batch.originalGravity,
     gravity: state.gravity,
     abv_percent: abv,
+    how: state.strength ? snakeKeys(state.strength.balling.how) : null,
     series: await seriesOf(batch.cellarId, batch.id, { points: SERIES_POINTS }),
     curve: await keptCurve(batch.id),
     entries: entries.flatMap((entry) => {
@@ -86,6 +90,7 @@ async function sharedLot(lot: Lot, share: Share, now: number): Promise<SharedBat
     ready: lot.readyFrom.getTime() <= now,
     sparkle: lot.sparkle,
     abv_percent: lot.abv,
+    how: howOfLot(lot, keptBench(lot.bench), keptCost(lot.cost)).strength,
     allergens: facts.allergens.text,
     caution: lot.caution !== null,
     tastings: summaryOf(tastings),
