@@ -36,17 +36,29 @@ export interface TrailFilter {
 
 /** The trail, newest first. */
 export function trail({ cellarId, personId, kind, from, to, before, limit }: TrailFilter): Promise<TrailRow[]> {
+  // Spelt out, not `is not distinct from`: that one reads the trails of all cellars.
+  const conditions = [cellarId === null ? 'a.cellar_id is null' : 'a.cellar_id = $cellarId'];
+  if (personId !== undefined) conditions.push('a.person_id = $personId');
+  if (kind !== undefined) conditions.push(`${KIND} = $kind`);
+  if (from !== undefined) conditions.push('a.at >= $from');
+  if (to !== undefined) conditions.push('a.at < $to');
+  if (before !== undefined) conditions.push('a.id < $before');
   return database().query<TrailRow>(
-    `select * from (
-       select a.id, a.at, ${KIND} as kind, a.action, a.subject, a.person_id as "personId", p.name as "personName", a.address, a.means, a.detail
-       from audit a left join people p on p.id = a.person_id
-       where a.cellar_id is not distinct from $cellarId
-         and ($personId::uuid is null or a.person_id = $personId)
-         and ($from::timestamptz is null or a.at >= $from) and ($to::timestamptz is null or a.at < $to)
-         and ($before::bigint is null or a.id < $before)
-     ) t
-     where $kind::text is null or kind = $kind
-     order by id desc limit $limit`,
-    { bind: { cellarId, personId: personId ?? null, kind: kind ?? null, from: from ?? null, to: to ?? null, before: before ?? null, limit }, type: QueryTypes.SELECT },
+    `select a.id, a.at, ${KIND} as kind, a.action, a.subject, a.person_id as "personId", p.name as "personName", a.address, a.means, a.detail
+     from audit a left join people p on p.id = a.person_id
+     where ${conditions.join(' and ')}
+     order by a.id desc limit $limit`,
+    {
+      bind: {
+        limit,
+        ...(cellarId !== null && { cellarId }),
+        ...(personId !== undefined && { personId }),
+        ...(kind !== undefined && { kind }),
+        ...(from !== undefined && { from }),
+        ...(to !== undefined && { to }),
+        ...(before !== undefined && { before }),
+      },
+      type: QueryTypes.SELECT,
+    },
   );
 }
