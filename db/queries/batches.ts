@@ -48,7 +48,7 @@ interface BatchFilter {
   withCurve?: boolean;
 }
 
-/** Batches of one cellar, newest first, with sensor, last judgement and open alerts, in one statement. */
+/** Batches of one cellar, newest first, with sensor, last judgement and open alerts, in one statement. The page is cut first: what hangs on a batch is looked up for those that are shown. */
 export function findBatches(filter: BatchFilter, transaction?: Transaction): Promise<BatchRow[]> {
   const conditions = ['b.cellar_id = $cellarId'];
   if (filter.id !== undefined) conditions.push('b.id = $id');
@@ -63,7 +63,7 @@ export function findBatches(filter: BatchFilter, transaction?: Transaction): Pro
        b.state, b.ended_at as "endedAt", b.created_at as "createdAt", b.created_at::text as "createdAtText",
        case when mv.id is not null then json_build_object('id', mv.must_id, 'versionId', mv.id, 'name', mv.body->>'name', 'version', mv.version) end as must,
        s.sensor, st.assessment, ${filter.withCurve ? 'st.curve, st.expected' : 'null as curve, null as expected'}, coalesce(ov.overruled, '[]') as overruled, coalesce(al.alerts, '[]') as alerts
-     from batches b
+     from (select b.* from batches b where ${conditions.join(' and ')} order by b.created_at desc, b.id desc limit $limit) b
      left join batch_states st on st.batch_id = b.id
      left join must_versions mv on mv.id = b.must_version_id
      left join lateral (
@@ -85,8 +85,7 @@ export function findBatches(filter: BatchFilter, transaction?: Transaction): Pro
        ) o left join people p on p.id = o.person_id
        where o.said->>'verdict' = st.assessment->'calls'->o.call->>'verdict' and o.said->>'kind' is not distinct from st.assessment->'calls'->o.call->>'kind'
      ) ov on true
-     where ${conditions.join(' and ')}
-     order by b.created_at desc, b.id desc limit $limit`,
+     order by b.created_at desc, b.id desc`,
     {
       bind: {
         cellarId: filter.cellarId,
