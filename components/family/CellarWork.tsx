@@ -41,16 +41,22 @@ const MOVES: readonly Tab[] = ['split', 'blend'];
 const WITH_ADDITIONS = (drink: DrinkBody): HowAnswer =>
   how('original gravity with all that went in since: masses of liquid, extract and alcohol are conserved', SOURCES.massBalance, [['at the pitch', drink.original_gravity, 'SG']]);
 
+const VOLUME_BY_LOG: HowAnswer = how('what was told at the pitch, with every racking, topping up, split, blend and bottling of the log since', SOURCES.told);
+
+const BY_WORDS = { float: 'the curve through the readings of its float', hydrometer: 'the last hydrometer reading, at 20 °C', refractometer: 'the last refractometer reading, with the alcohol reckoned in; good to 0.004' } as const;
+const GRAVITY_BY = ({ gravity_by: by, gravity_at: at }: DrinkBody): HowAnswer | undefined => (by ? how(BY_WORDS[by], SOURCES.told, [['at', at === null ? null : at.slice(0, 16).replace('T', ' '), 'UTC']]) : undefined);
+const LAST_TOLD: HowAnswer = how('the last that its sensor, or somebody with a thermometer, told', SOURCES.told);
+
 const SULPHITE_SO_FAR: HowAnswer = how('all sulphite that the must brought and the log adds ÷ the volume at the time, thinned by every top-up; what binds and what goes off is not taken off', SOURCES.practice);
 
 /** What is in the vessel by the log, in one ruled line. */
 function InIt({ drink }: { drink: DrinkBody }) {
   const facts = [
-    { name: 'in it', says: litres(drink.volume_l) },
+    { name: 'in it', says: litres(drink.volume_l), how: VOLUME_BY_LOG },
     { name: 'original gravity', says: drink.effective_og === null ? 'not told' : gravityText(drink.effective_og), how: drink.effective_og === drink.original_gravity ? undefined : WITH_ADDITIONS(drink) },
-    { name: 'gravity', says: drink.gravity === null ? 'not read' : `${gravityText(drink.gravity)}${drink.gravity_by ? ` by ${drink.gravity_by}` : ''}` },
+    { name: 'gravity', says: drink.gravity === null ? 'not read' : `${gravityText(drink.gravity)}${drink.gravity_by ? ` by ${drink.gravity_by}` : ''}`, how: drink.gravity === null ? undefined : GRAVITY_BY(drink) },
     { name: 'strength', says: drink.strength ? percent(drink.strength.balling.value.value) : 'not known', how: drink.strength?.balling.how },
-    { name: 'temperature', says: drink.temperature_c === null ? 'not told' : degrees(drink.temperature_c) },
+    { name: 'temperature', says: drink.temperature_c === null ? 'not told' : degrees(drink.temperature_c), how: drink.temperature_c === null ? undefined : LAST_TOLD },
     { name: 'sulphite added', says: drink.sulphite_added ? `${Math.ceil(drink.total_sulphite_mg_l.hi)} mg/L at most` : 'none logged', how: drink.sulphite_added ? SULPHITE_SO_FAR : undefined },
   ];
   return <Facts facts={facts} columns="grid-cols-2 strip:grid-cols-3 wide:grid-cols-6" className="bg-desk" />;

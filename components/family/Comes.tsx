@@ -4,6 +4,7 @@ import { Sentence } from '@/components/ui/Sentence';
 import { State } from '@/components/ui/StateMark';
 import { Vessel } from '@/components/vessel/Vessel';
 import type { BatchBody } from '@/lib/contracts/batches';
+import type { Racking } from '@/lib/core/family/cellarwork';
 import type { Neck } from '@/lib/core/types';
 import type { Poured } from './poured';
 
@@ -17,6 +18,17 @@ function roomWords({ litres: full, vesselL, room }: Poured): string {
   if (room === 'too_much') return `${litres(full)} do not go into ${litres(vesselL)}.`;
   const free = `${litres(full)} in ${litres(vesselL)}: ${litres(vesselL - full)} free.`;
   return room === 'air' ? `${free} A drink that no longer works browns under air: top it up, or take a smaller vessel.` : free;
+}
+
+/** Less than this is not worth telling: a hydrometer shows no tenth of a point. */
+const SHOWN = 0.05;
+
+function changeWords({ gravityChangePoints: gravity, abvChangePercent: strength, reading }: Racking): string {
+  const [moves, thins] = [Math.abs(gravity) >= SHOWN, Math.abs(strength) >= SHOWN];
+  if (!moves && !thins) return 'Gravity and strength stay as they are.';
+  const signed = `${strength >= 0 ? '+' : '−'}${Math.abs(strength).toFixed(1)} %`;
+  const first = moves ? `Gravity ${gravity > 0 ? '+' : ''}${points(gravity)}` : 'Gravity as it was';
+  return `${first}, strength ${thins ? signed : 'as it was'}${reading ? `; as if it had begun at ${gravityText(reading.effectiveOg)}` : ''}.`;
 }
 
 /** What a racking or topping up comes to, told before anything is poured. */
@@ -53,11 +65,7 @@ export function Comes({ batch, neck, result, waits }: { batch: BatchBody; neck: 
             <Sentence strong>{`${gravityText(after.gravity)}, ${percent(after.abvPercent)}`}</Sentence>
           </p>
           <p className="type-body">
-            <Sentence>
-              {Math.abs(moved.gravityChangePoints) < 0.05 && Math.abs(moved.abvChangePercent) < 0.05
-                ? 'Gravity and strength stay as they are.'
-                : `Gravity ${points(moved.gravityChangePoints)}, strength ${moved.abvChangePercent >= 0 ? '+' : '−'}${Math.abs(moved.abvChangePercent).toFixed(1)} %; as if it had begun at ${gravityText(after.effectiveOg)}.`}
-            </Sentence>
+            <Sentence>{changeWords(moved)}</Sentence>
           </p>
           {moved.cautions.length > 0 && (
             <ul className="mt-1 border-l-[3px] border-ochre pl-3">

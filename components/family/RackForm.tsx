@@ -111,6 +111,7 @@ export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rac
   });
   const waits = result === null ? 'Say how much stays on the lees.' : drink && (drink.gravity === null || drink.effective_og === null) ? 'Gravity and strength follow once an original gravity and a reading are logged.' : 'Gravity and strength follow once it is told what goes in.';
   const before = batch.volume_l - (rack ? (typedNumber(draft.left) ?? 0) : 0);
+  const comes = <Comes batch={batch} neck={NECKS.find((neck) => neck === draft.neck) ?? batch.neck} result={result} waits={waits} />;
   const room = (typedNumber(draft.vessel) ?? batch.vessel_l) - before;
   const given = (name: keyof typeof draft) => ({ value: draft[name], onChange: set(name), error: errors[name] });
   const field = (name: keyof typeof draft, label: string) => <Field label={label} autoComplete="off" {...given(name)} />;
@@ -170,15 +171,14 @@ export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rac
         <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={draft.at} onChange={set('at')} error={errors.at} />
         <Field label="Note" autoComplete="off" maxLength={2000} value={draft.text} onChange={set('text')} />
         {failed && <FormError>{failed}</FormError>}
+        <div className="wide:hidden">{comes}</div>
         <div className="flex justify-end">
           <Button look="first" type="submit" disabled={sending}>
             {sending ? 'Saving' : rack ? 'Racked' : 'Topped up'}
           </Button>
         </div>
       </form>
-      <aside className="wide:sticky wide:top-4 wide:self-start">
-        <Comes batch={batch} neck={NECKS.find((neck) => neck === draft.neck) ?? batch.neck} result={result} waits={waits} />
-      </aside>
+      <aside className="max-wide:hidden wide:sticky wide:top-4 wide:self-start">{comes}</aside>
     </div>
   );
 }

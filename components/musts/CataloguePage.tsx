@@ -4,7 +4,6 @@ import { useState } from 'react';
 import { Sheet } from '@/components/batch/Sheet';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
-import { temperatureNumber, temperatureText } from '@/components/ui/units';
 import { Haze } from '@/components/ui/Haze';
 import { EmptyState, ErrorState, FormError } from '@/components/ui/Notice';
 import { GroupBar, PageHead } from '@/components/ui/Page';
@@ -22,7 +21,6 @@ type Ingredient = CatalogueBody['ingredients'][number];
 type Yeast = CatalogueBody['yeasts'][number];
 /** `id` null: a new one, perhaps begun from one of the program's. */
 type Opened = { sort: 'ingredient'; id: string | null; from: Ingredient | null } | { sort: 'yeast'; id: string | null; from: Yeast | null };
-
 
 /** One's own is told apart from what it was begun from. */
 const nameFor = ({ id, from }: Opened) => (id === null ? `${from?.name ?? ''}, ours` : (from?.name ?? ''));
