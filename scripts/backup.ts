@@ -1,3 +1,4 @@
+import '@/lib/config/dot-env';
 import { resolve } from 'node:path';
 import { EnvError } from '@/lib/config/env';
 import { systemClock } from '@/lib/clock';

@@ -1,4 +1,4 @@
-import { existsSync } from 'node:fs';
+import '@/lib/config/dot-env';
 import { z } from 'zod';
 import { closeDatabase } from '@/db/client';
 import { EnvError } from '@/lib/config/env';
@@ -10,7 +10,6 @@ if (!email) {
   console.error('Usage: npm run keeper -- you@your.example "Name of the cellar"');
   process.exit(2);
 }
-if (existsSync('.env')) process.loadEnvFile('.env');
 try {
   const { url } = await foundCellar({ email, name, time_zone: Intl.DateTimeFormat().resolvedOptions().timeZone });
   console.log(`Open this within a day, once, to become the keeper of "${name}":\n${url}`);

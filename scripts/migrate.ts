@@ -1,3 +1,4 @@
+import '@/lib/config/dot-env';
 import { closeDatabase, database } from '@/db/client';
 import { migrate } from '@/db/migrate';
 

@@ -1,3 +1,4 @@
+import '@/lib/config/dot-env';
 import { prepareDatabase } from './lib/prepare';
 
 /** `npm run seed`: migrates DATABASE_URL and fills it with the demo where it is empty. */

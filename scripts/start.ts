@@ -1,3 +1,4 @@
+import '@/lib/config/dot-env';
 import { randomBytes } from 'node:crypto';
 import { existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { join, resolve } from 'node:path';
@@ -27,11 +28,6 @@ async function timed<T>(what: string, work: () => Promise<T>): Promise<T> {
     process.stdout.write(' failed\n');
     throw error;
   }
-}
-
-function readEnvironment(): Env {
-  if (existsSync(join(ROOT, '.env'))) process.loadEnvFile(join(ROOT, '.env'));
-  return parseEnv(process.env);
 }
 
 /** Is that process a start of ours? A number left over from before a reboot may be anybody's. */
@@ -110,7 +106,7 @@ async function openDatabase(env: Env): Promise<{ url: string; cluster: Cluster |
 
 async function main(): Promise<void> {
   console.log('Fallbright');
-  const env = readEnvironment();
+  const env = parseEnv(process.env);
   // Asked before SMTP_URL is filled in for the parts.
   const mailbox = !process.env.SMTP_URL;
   const storage = !env.S3_ENDPOINT;

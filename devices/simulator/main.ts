@@ -1,3 +1,4 @@
+import '@/lib/config/dot-env';
 import { join } from 'node:path';
 import { systemClock } from '@/lib/clock';
 import { env, EnvError } from '@/lib/config/env';
