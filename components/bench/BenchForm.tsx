@@ -6,6 +6,7 @@ import { Sentence } from '@/components/ui/Sentence';
 import { UnitField } from '@/components/units/UnitField';
 import type { BenchFacts } from '@/lib/contracts/bench';
 import { Bottles } from './Bottles';
+import { Fizz } from './Fizz';
 import type { BenchDraft, BenchErrors, SugarWay, WeighedSugar } from './draft';
 import { SUGAR_WORDS } from './words';
 
@@ -15,30 +16,6 @@ const WAYS: readonly { value: SugarWay; name: string }[] = [
   { value: 'syrup', name: 'syrup' },
   { value: 'drops', name: 'drops' },
 ];
-const FIZZ: readonly { volumes: number; name: string }[] = [
-  { volumes: 2, name: 'lightly sparkling' },
-  { volumes: 2.8, name: 'sparkling' },
-];
-const TOP = 4;
-const BOTTOM = 1;
-
-function Fizz({ volumes, onChange }: { volumes: number; onChange: (volumes: number) => void }) {
-  return (
-    <div className="flex flex-col gap-1">
-      <label htmlFor="fizz" className="type-label flex justify-between gap-3 text-ink2">
-        wanted fizz <span className="font-semibold text-ink">{volumes.toFixed(1)} volumes</span>
-      </label>
-      <input id="fizz" type="range" min={BOTTOM} max={TOP} step={0.1} value={volumes} onChange={(event) => onChange(Number(event.target.value))} aria-valuetext={`${volumes.toFixed(1)} volumes`} className="h-11 w-full accent-(--ink) strip:h-7" />
-      <div className="flex flex-wrap gap-2">
-        {FIZZ.map((fizz) => (
-          <button key={fizz.name} type="button" aria-pressed={volumes === fizz.volumes} onClick={() => onChange(fizz.volumes)} className={`type-label min-h-11 rounded border px-3 strip:min-h-[30px] ${volumes === fizz.volumes ? 'border-ink bg-ink text-on' : 'border-ink3 text-ink hover:bg-desk'}`}>
-            {fizz.name} {fizz.volumes.toFixed(1)}
-          </button>
-        ))}
-      </div>
-    </div>
-  );
-}
 
 /** What is asked of the bench; all that is known from the log is not asked. */
 export function BenchForm({ draft, errors, facts, onChange }: { draft: BenchDraft; errors: BenchErrors; facts: BenchFacts; onChange: (part: Partial<BenchDraft>) => void }) {

@@ -20,7 +20,9 @@ import type { BenchRequest, BenchVerdict, BottlePicture } from '@/lib/core/bottl
 import { PRESSURE_CAUTIONS } from '@/lib/core/bottling/bottles';
 import { drinkPressure } from '@/lib/core/bottling/co2';
 import { pressureByDay } from '@/lib/core/bottling/conditioning';
+import { primes } from '@/lib/core/bottling/judge';
 import { judgeBench } from '@/lib/core/bottling/verdict';
+import { After } from './After';
 import { BenchForm } from './BenchForm';
 import { BottleIt } from './BottleIt';
 import { BottleTable } from './BottleTable';
@@ -77,6 +79,7 @@ function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
   const { form, errors } = useMemo(() => formOf(draft, facts), [draft, facts]);
   const request = useMemo(() => form && requestOf(form, facts), [form, facts]);
   const verdict = useMemo(() => request && judgeBench(request), [request]);
+  const now = useNow();
   const { batch, done } = facts;
   return (
     <div className="drink wide:grid wide:min-h-[calc(100dvh-var(--header))] wide:grid-cols-[412px_minmax(0,1fr)] wide:grid-rows-[auto_1fr]" style={{ '--drink': drinkHex(batch.drink_colour) } as CSSProperties}>
@@ -110,6 +113,7 @@ function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
       <div className="min-w-0 max-wide:border-t-[1.5px] max-wide:border-ink">
         {verdict && request && <Pictures verdict={verdict} request={request} timeZone={timeZone} />}
         {verdict?.verdict === 'stop' && <Ways ways={verdict.ways} onUse={(way) => way.request && setDraft((before) => takeWay(before, way.request!))} />}
+        {verdict?.verdict === 'safe' && request && now !== null && <After now={now} cellarC={request.cellarC} primed={primes(request)} timeZone={timeZone} />}
         {verdict && <BottleTable verdict={verdict} />}
         {facts.for_gas.assumed && <p className="type-reason border-t px-(--margin) py-2 text-ink2">Nobody told the original gravity: strength and sugar are taken at the upper end of what they may be.</p>}
         <Cautions />

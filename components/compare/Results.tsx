@@ -3,22 +3,28 @@ import { percent } from '@/components/batch/figures';
 import { KIND_WORDS } from '@/components/batch/words';
 import { GroupBar } from '@/components/ui/Page';
 import { How } from '@/components/ui/How';
+import { HOW_TASTED } from '@/components/tasting/words';
 import { gravityText } from '@/components/ui/units';
+import { how, type How as HowAnswer } from '@/lib/core/how/how';
+import { SOURCES } from '@/lib/core/how/sources';
 import type { Compared } from './curves';
+
+const ATTENUATION = how('(original gravity − gravity) ÷ (original gravity − 1), with all the sugar that went in counted as there from the start; alcohol is lighter than water, so a dry drink passes 100 %', SOURCES.practice);
+const TO_THE_END = how('from the pitch to the hour from which its readings are judged to stand still', SOURCES.ownRule);
 
 const days = (hours: number): string => `${(hours / 24).toFixed(1)} days`;
 
 /** What became of each, side by side. */
 export function Results({ items }: { items: readonly Compared[] }) {
-  const rows: Array<{ name: string; says: (item: Compared) => string }> = [
+  const rows: Array<{ name: string; says: (item: Compared) => string; how?: HowAnswer }> = [
     { name: 'kind', says: ({ batch }) => KIND_WORDS[batch.kind] },
     { name: 'yeast', says: ({ batch }) => batch.yeast ?? 'not told' },
     { name: 'original gravity', says: ({ batch }) => (batch.original_gravity === null ? 'not told' : gravityText(batch.original_gravity)) },
     { name: 'gravity', says: ({ result }) => (result.gravity === null ? 'not read' : gravityText(result.gravity)) },
-    { name: 'attenuation', says: ({ result }) => (result.attenuation_percent === null ? 'not known' : `${result.attenuation_percent.toFixed(0)} %`) },
-    { name: 'from pitch to the end', says: ({ batch, result }) => (result.hours_to_terminal === null ? (batch.state === 'ended' ? 'not known' : 'not yet') : days(result.hours_to_terminal)) },
+    { name: 'attenuation', says: ({ result }) => (result.attenuation_percent === null ? 'not known' : `${result.attenuation_percent.toFixed(0)} %`), how: ATTENUATION },
+    { name: 'from pitch to the end', says: ({ batch, result }) => (result.hours_to_terminal === null ? (batch.state === 'ended' ? 'not known' : 'not yet') : days(result.hours_to_terminal)), how: TO_THE_END },
     { name: 'lots', says: ({ result }) => String(result.lots) },
-    { name: 'tasted', says: ({ result }) => (result.score === null ? 'by nobody' : `${result.score.toFixed(1)} of 10`) },
+    { name: 'tasted', says: ({ result }) => (result.score === null ? 'by nobody' : `${result.score.toFixed(1)} of 10`), how: HOW_TASTED },
   ];
   return (
     <section aria-label="Results">
@@ -51,6 +57,7 @@ export function Results({ items }: { items: readonly Compared[] }) {
               <tr key={row.name} className="border-b border-rule align-baseline">
                 <th scope="row" className="type-label py-1.5 pl-(--margin) pr-4 text-left font-medium text-ink2">
                   {row.name}
+                  {row.how && <How how={row.how} of={row.name} className="max-w-56" />}
                 </th>
                 {items.map((item) => (
                   <td key={item.batch.id} className="py-1.5 pr-5 font-mono text-[0.875rem] font-semibold">

@@ -87,7 +87,7 @@ export function TastingSheet({ guest, onSend }: { guest: boolean; onSend: (taste
       <TextField label="in your words" value={words} maxLength={1000} onChange={(event) => setWords(event.target.value)} />
       <TextField label="next time" rows={2} value={next} maxLength={500} hint="It goes along when the must sheet is copied." onChange={(event) => setNext(event.target.value)} />
       {guest ? (
-        <Field label="your name, if you like" value={name} maxLength={40} autoComplete="off" onChange={(event) => setName(event.target.value)} />
+        <Field label="your name, if you like" hint="A name may stand beside your words on this page." value={name} maxLength={40} autoComplete="off" onChange={(event) => setName(event.target.value)} />
       ) : (
         <Box ticked={show} onTick={setShow}>
           <span className="type-body">My name may stand on the share page.</span>

@@ -20,7 +20,7 @@ export function Facts({ facts, columns, className = '' }: { facts: readonly Fact
     <div className={`border-b ${className}`}>
       <dl className={`grid ${columns}`}>
         {facts.map((fact) => (
-          <div key={fact.name} className="border-r border-rule px-3 py-2 first:pl-(--margin)">
+          <div key={fact.name} className={`border-r border-rule px-3 py-2 first:pl-(--margin) ${columns.includes('grid-cols-2') ? 'max-strip:odd:pl-(--margin)' : ''}`}>
             <dt className="type-label text-ink2">{fact.name}</dt>
             <dd>
               <span className="block font-mono text-[0.9375rem] font-semibold leading-5 break-words">{fact.says}</span>

@@ -158,6 +158,16 @@ describe('one batch, from the idea to the tasting note', () => {
     expect(labels.status()).toBe(200);
     expect((await labels.body()).subarray(0, 5).toString()).toBe('%PDF-');
 
+    // The preview is that file, drawn on the page: ink stands on its paper.
+    await page.goto(`${house.web.url}/labels?lot=${at.lot}`);
+    const sheet = page.getByRole('img', { name: /sheet 1 of 1$/ });
+    await sheet.waitFor();
+    await page.waitForFunction((canvas) => {
+      const { data } = (canvas as HTMLCanvasElement).getContext('2d')!.getImageData(0, 0, (canvas as HTMLCanvasElement).width, (canvas as HTMLCanvasElement).height);
+      return data.some((value, index) => index % 4 === 0 && value < 60 && data[index + 3]! > 200);
+    }, await sheet.elementHandle());
+    await page.goto(`${house.web.url}/book/${at.lot}`);
+
     await page.getByRole('button', { name: 'Make a link' }).click();
     const link = page.getByRole('link', { name: /\/share\// });
     await link.waitFor();

@@ -49,6 +49,9 @@ export function overRatingFrom(points: readonly WeekPoint[], ratedBar: number): 
   return points.find((p) => p.worstBar > ratedBar)?.at ?? null;
 }
 
+/** A bottle is opened to feel its pressure after a week: common practice. */
+export const TEST_AFTER_DAYS = 7;
+
 export interface Ready {
   at: Instant;
   days: number;

@@ -1,10 +1,9 @@
 import type { Transaction } from 'sequelize';
 import { Job, type Lot } from '@/db/models';
+import { TEST_AFTER_DAYS } from '@/lib/core/bottling/conditioning';
 import { notifyChange } from '../changes';
 
 const DAY_MS = 86_400_000;
-/** A bottle is opened to feel its pressure after a week: common practice. */
-const TEST_AFTER_DAYS = 7;
 
 const job = (lot: Lot, kind: string, title: string, note: string, dueAt: Date, more: Partial<Job> = {}) =>
   ({ cellarId: lot.cellarId, lotId: lot.id, kind, title, note, source: 'timer', dedupeKey: `${kind}:${lot.id}`, dueAt, ...more }) as const;
