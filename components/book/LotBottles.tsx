@@ -1,3 +1,4 @@
+import { degrees } from '@/components/batch/figures';
 import { BottleDrawing } from '@/components/bench/BottleDrawing';
 import { sizeWords } from '@/components/bench/words';
 import { How } from '@/components/ui/How';
@@ -18,8 +19,8 @@ function figuresOf(bottle: LotBody['bottles'][number], lot: LotBody): Figure[] {
   const { cellar_c, warmest_store_c } = lot.bench;
   return [
     { name: 'holds', says: bottle.rating === 'never' ? 'still drink' : `${bottle.rating.toFixed(1)} bar${bottle.rating_confirmed ? '' : ', not confirmed'}`, how: null },
-    { name: `in the cellar, ${cellar_c} °C`, says: `${bottle.cellar_bar.toFixed(1)} bar`, how: bottle.how.cellar },
-    { name: `warmest, ${warmest_store_c} °C`, says: `${bottle.warm_bar.toFixed(1)} bar`, how: bottle.how.warm },
+    { name: `in the cellar, ${degrees(cellar_c)}`, says: `${bottle.cellar_bar.toFixed(1)} bar`, how: bottle.how.cellar },
+    { name: `warmest, ${degrees(warmest_store_c)}`, says: `${bottle.warm_bar.toFixed(1)} bar`, how: bottle.how.warm },
     { name: 'if the last sugar goes', says: `${bottle.worst_bar.toFixed(1)} bar`, how: bottle.how.worst },
     ...(bottle.cost_each ? [{ name: 'cost of one', says: `${money(bottle.cost_each)}${lot.cost_known ? '' : ' or more'}`, how: lot.how.cost }] : []),
   ];
