@@ -12,6 +12,7 @@ import { useBatches } from '@/lib/client/batches';
 import { keepFile, lookAtFile } from '@/lib/client/imports';
 import { ClientError } from '@/lib/client/fetcher';
 import { Preview, type Chosen } from './Preview';
+import { countWords } from './words';
 
 type Kind = 'readings' | 'batches' | 'archive';
 const KINDS: readonly { value: Kind; name: string }[] = [
@@ -70,7 +71,7 @@ export function ImportFile() {
     const form = { ...formOf(kind, looked.file, choicesOf(looked.preview)), ...(kind === 'readings' && { batch_id: batch }) };
     await run(async () => {
       const kept = await keepFile(form as Parameters<typeof keepFile>[0]);
-      setDone(`Kept: ${Object.entries(kept.counts).map(([name, count]) => `${count} ${name}`).join(', ')}.`);
+      setDone(`Kept: ${countWords(kept.counts)}.`);
       setLooked(null);
     });
   }

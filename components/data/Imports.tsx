@@ -8,6 +8,7 @@ import { FormError } from '@/components/ui/Notice';
 import { GroupBar } from '@/components/ui/Page';
 import { undoImport, useImports } from '@/lib/client/imports';
 import { useMe } from '@/lib/client/me';
+import { countWords } from './words';
 
 /** What was brought in, each to be taken out again in one step. */
 export function Imports() {
@@ -30,7 +31,7 @@ export function Imports() {
                 {item.batch && ` into ${item.batch.name}`}
               </span>
               <span className="type-label text-ink2">
-                {Object.entries(item.counts).map(([name, count]) => `${count} ${name}`).join(', ')}; {day(item.created_at)}
+                {countWords(item.counts)}; {day(item.created_at)}
                 {item.by && `, ${item.by}`}
                 {item.undone_at && `; taken out ${day(item.undone_at)}`}
               </span>
