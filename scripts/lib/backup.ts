@@ -115,9 +115,17 @@ export async function backup(place: Place, file: string, madeAt: Date): Promise<
   }
 }
 
+function jsonOf(text: string): unknown {
+  try {
+    return JSON.parse(text);
+  } catch {
+    return null;
+  }
+}
+
 async function readManifest(stage: string): Promise<Manifest> {
   const text = await readFile(join(stage, 'manifest.json'), 'utf8').catch(() => null);
-  const parsed = text === null ? null : manifestSchema.safeParse(JSON.parse(text));
+  const parsed = text === null ? null : manifestSchema.safeParse(jsonOf(text));
   if (!parsed?.success) throw new BackupError('This is no backup of Fallbright, or of a later version than this one.');
   if ((await sha256(join(stage, 'database.dump'))) !== parsed.data.database_sha256) throw new BackupError('The backup is damaged: its database is not the one that was written.');
   return parsed.data;

@@ -1,6 +1,6 @@
 import { execFile, spawn } from 'node:child_process';
 import { randomBytes } from 'node:crypto';
-import { access, chmod, chown, mkdir, readdir, readFile, rm, writeFile } from 'node:fs/promises';
+import { access, chmod, chown, mkdir, readdir, readFile, rename, rm, writeFile } from 'node:fs/promises';
 import { createServer } from 'node:net';
 import { join } from 'node:path';
 import { promisify } from 'node:util';
@@ -106,9 +106,12 @@ export async function startCluster(folder: string, port: number, settings: Recor
       const { uid, gid } = await serverUserIds();
       await chown(forInit, uid, gid);
     }
-    await rm(data, { recursive: true, force: true });
-    await asServerUser(join(bin, 'initdb'), ['-D', data, '-E', 'UTF8', '--locale=C.UTF-8', '-U', 'fallbright', '--auth=scram-sha-256', `--pwfile=${forInit}`, '--data-checksums', '--no-instructions']);
+    // Made beside and then named: one that was cut off half way would look whole.
+    const making = `${data}.making`;
+    for (const left of [data, making]) await rm(left, { recursive: true, force: true });
+    await asServerUser(join(bin, 'initdb'), ['-D', making, '-E', 'UTF8', '--locale=C.UTF-8', '-U', 'fallbright', '--auth=scram-sha-256', `--pwfile=${forInit}`, '--data-checksums', '--no-instructions']);
     await rm(forInit, { force: true });
+    await rename(making, data);
   }
   await access(passwordFile);
   await chmod(passwordFile, 0o600);

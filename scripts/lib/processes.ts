@@ -1,5 +1,5 @@
 import { spawn, type ChildProcess } from 'node:child_process';
-import { mkdirSync, openSync } from 'node:fs';
+import { closeSync, mkdirSync, openSync } from 'node:fs';
 import { join } from 'node:path';
 
 export interface Part {
@@ -38,6 +38,8 @@ export class Processes {
     const out = openSync(join(this.logFolder, `${part.name}.log`), 'a');
     const began = Date.now();
     const child = spawn(process.execPath, part.args, { env: { ...process.env, ...part.env }, stdio: ['ignore', out, out], detached: true });
+    // The child has its own; one kept here for each restart would run out in a night of them.
+    closeSync(out);
     this.running.set(part.name, child);
     child.on('error', (error) => this.say(`${part.name} could not start: ${error.message}`));
     child.on('exit', (code, signal) => {
