@@ -47,11 +47,20 @@ export function smtpTransport({ url, from, connectTimeoutMs = 10_000, sendTimeou
   };
 }
 
+/** The server shuts down (RFC 5321), or does not let the house in (RFC 4954): every mail would fare the same, and none is at fault. */
+const NOT_OF_THE_MAIL = new Set([421, 454, 530, 534, 535, 538]);
+
+function kindOf(responseCode: number | undefined, code: string | undefined): FailureKind {
+  // Without an answer it was not reached, unless the mail never left: its address is none.
+  if (responseCode === undefined) return code === 'EENVELOPE' ? 'refused' : 'unavailable';
+  if (NOT_OF_THE_MAIL.has(responseCode)) return 'unavailable';
+  return responseCode >= 500 ? 'refused' : 'deferred';
+}
+
 /** What nodemailer reports, as one of our three. */
 export function asFailure(error: unknown): MailFailure {
   if (error instanceof MailFailure) return error;
-  const { responseCode, message = String(error) } = error as { responseCode?: number; message?: string };
-  const kind: FailureKind = responseCode === undefined || responseCode === 421 ? 'unavailable' : responseCode >= 500 ? 'refused' : 'deferred';
+  const { responseCode, code, message = String(error) } = error as { responseCode?: number; code?: string; message?: string };
   // Servers write many lines; the first says it.
-  return new MailFailure(kind, message.split(/[\r\n]/, 1)[0]!.slice(0, 300), { cause: error });
+  return new MailFailure(kindOf(responseCode, code), message.split(/[\r\n]/, 1)[0]!.slice(0, 300), { cause: error });
 }
