@@ -48,7 +48,7 @@ export function databaseIsAway(error: unknown): boolean {
 export function problemResponse(code: string, detail?: string, more: { errors?: Problem['errors']; headers?: Record<string, string> } = {}): Response {
   const [status, title] = STATUS[code] ?? STATUS.internal!;
   // RFC 9110 15.5.2: a 401 names the way to sign in. Browsers ask nobody for a bearer token.
-  const challenge = status === 401 ? { 'www-authenticate': 'Bearer' } : {};
+  const challenge: Record<string, string> = status === 401 ? { 'www-authenticate': 'Bearer' } : {};
   const body: Problem = { type: `urn:fallbright:problem:${code}`, title, status, ...(detail ? { detail } : {}), ...(more.errors && Object.keys(more.errors).length > 0 ? { errors: more.errors } : {}) };
   return new Response(JSON.stringify(body), { status, headers: { 'content-type': 'application/problem+json', 'cache-control': 'no-store', ...challenge, ...more.headers } });
 }
