@@ -9,6 +9,10 @@ export type Block =
   | { type: 'line'; text: string }
   | { type: 'prose'; text: string }
   | { type: 'part'; label: string; text: string }
+  /** Under a label, line by line: when, and what. `late` is said in madder. */
+  | { type: 'rows'; label: string; rows: Array<{ lead: string; late: boolean; text: string }>; after: string | null }
+  /** One vessel in a line, under its state. */
+  | { type: 'vessel'; word: string; colour: 'madder' | 'ochre' | 'green' | 'ink2'; text: string }
   | { type: 'figures'; rows: Array<{ name: string; value: string; limit: string | null }> }
   | { type: 'caution'; text: string }
   | { type: 'link'; label: string; url: string }
@@ -38,6 +42,13 @@ function withFigures(text: string): string {
   return out + escapeHtml(text.slice(from));
 }
 
+const labelHtml = (label: string) => `<p class="ink2 ruled" style="margin:18px 0 6px;padding-bottom:3px;border-bottom:1px solid #8FA292;font:500 12px/18px ${MONO};color:${COLOURS.ink2}">${escapeHtml(label)}</p>`;
+
+function rowsHtml({ label, rows, after }: Extract<Block, { type: 'rows' }>): string {
+  const cells = rows.map(({ lead, late, text }) => `<tr><td class="${late ? 'madder' : 'ink2'}" valign="top" style="padding:3px 14px 3px 0;font:${late ? 560 : 500} 12px/22px ${MONO};color:${late ? COLOURS.madder : COLOURS.ink2};white-space:nowrap">${escapeHtml(lead)}</td><td class="ink" valign="top" style="padding:3px 0;font:400 16px/22px ${SERIF};color:${COLOURS.ink}">${withFigures(text)}</td></tr>`);
+  return `${labelHtml(label)}<table role="presentation" cellpadding="0" cellspacing="0" style="border-collapse:collapse;margin:0 0 ${after === null ? 14 : 4}px">${cells.join('')}</table>${after === null ? '' : `<p class="ink2" style="margin:0 0 14px;font:400 14px/20px ${SERIF};color:${COLOURS.ink2}">${withFigures(after)}</p>`}`;
+}
+
 function blockHtml(block: Block): string {
   switch (block.type) {
     case 'state':
@@ -49,7 +60,11 @@ function blockHtml(block: Block): string {
     case 'prose':
       return `<p class="ink" style="margin:0 0 14px;font:400 16px/23px ${SERIF};color:${COLOURS.ink}">${withFigures(block.text)}</p>`;
     case 'part':
-      return `<p class="ink2 ruled" style="margin:18px 0 6px;padding-bottom:3px;border-bottom:1px solid #8FA292;font:500 12px/18px ${MONO};color:${COLOURS.ink2}">${escapeHtml(block.label)}</p><p class="ink" style="margin:0 0 14px;font:400 16px/23px ${SERIF};color:${COLOURS.ink}">${withFigures(block.text).replaceAll('\n', '<br>')}</p>`;
+      return `${labelHtml(block.label)}<p class="ink" style="margin:0 0 14px;font:400 16px/23px ${SERIF};color:${COLOURS.ink}">${withFigures(block.text).replaceAll('\n', '<br>')}</p>`;
+    case 'rows':
+      return rowsHtml(block);
+    case 'vessel':
+      return `<p class="ink" style="margin:0 0 10px;font:400 16px/23px ${SERIF};color:${COLOURS.ink}"><span class="${block.colour}" style="display:inline-block;min-width:64px;font:560 13px/18px ${MONO};color:${COLOURS[block.colour]}">${escapeHtml(block.word)}</span> ${withFigures(block.text)}</p>`;
     case 'figures':
       return `<table role="presentation" cellpadding="0" cellspacing="0" style="border-collapse:collapse;margin:0 0 14px">${block.rows
         .map(
@@ -82,6 +97,10 @@ function blockText(block: Block): string {
       return `\n${block.text}`;
     case 'part':
       return `\n${block.label}\n${'-'.repeat(block.label.length)}\n${block.text}`;
+    case 'rows':
+      return `\n${block.label}\n${'-'.repeat(block.label.length)}\n${[...block.rows.map(({ lead, text }) => `${lead}: ${text}`), ...(block.after === null ? [] : [block.after])].join('\n')}`;
+    case 'vessel':
+      return `\n[${block.word}] ${block.text}`;
     case 'figures':
       return `\n${block.rows.map((row) => `  ${row.name}: ${row.value}${row.limit === null ? '' : ` (limit ${row.limit})`}`).join('\n')}`;
     case 'caution':

@@ -6,29 +6,30 @@ type Lane = DigestPayload['lanes'][number];
 
 const COLOURS: Record<string, Extract<Block, { type: 'state' }>['colour']> = { Stop: 'madder', Now: 'madder', Check: 'ochre', Ready: 'green', Done: 'green' };
 
-function jobLine(job: DigestPayload['jobs'][number], zone: string): string {
-  const time = job.late ? `late, ${when(job.due, zone)}` : job.exact ? when(job.due, zone).slice(-5) : 'today';
-  return [`${time}: ${bare(job.title)}`, job.place, job.taken_by === null ? null : `${job.taken_by} has it`].filter((part) => part !== null).join(', ');
+function jobRow(job: DigestPayload['jobs'][number], zone: string): Extract<Block, { type: 'rows' }>['rows'][number] {
+  return {
+    lead: job.late ? `late, ${when(job.due, zone)}` : job.exact ? when(job.due, zone).slice(-5) : 'today',
+    late: job.late,
+    text: [bare(job.title), job.place, job.taken_by === null ? null : `${job.taken_by} has it`].filter((part) => part !== null).join(', '),
+  };
 }
+
+const rounds = ({ jobs, more_jobs, next_job, time_zone: zone }: DigestPayload): Block =>
+  jobs.length > 0
+    ? { type: 'rows', label: 'the rounds', rows: jobs.map((job) => jobRow(job, zone)), after: more_jobs ? `and ${more_jobs} more` : null }
+    : { type: 'part', label: 'the rounds', text: `Nothing due today.${next_job ? ` Next: ${bare(next_job.title)}, ${when(next_job.due, zone)}.` : ''}` };
 
 const laneLine = (lane: Lane) => `${vesselName(lane)}${lane.gravity === null ? '' : `, ${figure(lane.gravity, 'SG')}`}. ${bare(lane.headline)}.`;
 
 /** One cellar's morning, to stand by itself or below other messages. */
 export function digestBlocks(payload: DigestPayload, { publicUrl }: RenderContext): Block[] {
-  const { jobs, lanes, time_zone: zone } = payload;
+  const { lanes, time_zone: zone } = payload;
   const wanting = lanes.filter((lane) => lane.state !== 'Leave be' && lane.state !== 'Done');
   const left = lanes.filter((lane) => !wanting.includes(lane));
   return [
     { type: 'title', text: `${payload.cellar.name}, ${headlineDay(payload.at, zone)}` },
-    {
-      type: 'part',
-      label: 'the rounds',
-      text: jobs.length ? jobs.map((job) => jobLine(job, zone)).join('\n') + (payload.more_jobs ? `\nand ${payload.more_jobs} more` : '') : `Nothing due today.${payload.next_job ? ` Next: ${bare(payload.next_job.title)}, ${when(payload.next_job.due, zone)}.` : ''}`,
-    },
-    ...wanting.flatMap((lane): Block[] => [
-      { type: 'state', word: lane.state, colour: COLOURS[lane.state] ?? 'ink2' },
-      { type: 'prose', text: laneLine(lane) },
-    ]),
+    rounds(payload),
+    ...wanting.map((lane): Block => ({ type: 'vessel', word: lane.state, colour: COLOURS[lane.state] ?? 'ink2', text: laneLine(lane) })),
     ...(left.length ? [{ type: 'part', label: 'leave be', text: left.map(laneLine).join('\n') + (payload.more_lanes ? `\nand ${payload.more_lanes} more` : '') } as const] : []),
     ...(lanes.length ? [] : [{ type: 'prose', text: 'No vessel is at work.' } as const]),
     ...payload.muted.map((mute): Block => ({ type: 'line', text: `${mute.name} is muted until ${when(mute.until, zone)}${mute.by === null ? '' : ` by ${mute.by}`}.` })),

@@ -56,7 +56,7 @@ export function several(payloads: readonly MailPayload[], context: RenderContext
     ...(told ? [{ type: 'title', text: told > 1 ? `${count} at once` : count } as const] : []),
     ...house.map((payload): Block => ({ type: 'prose', text: `${ingestMail(payload, context).subject} (${when(payload.at, payload.time_zone)}).` })),
     ...alerts.flatMap((payload) => item(payload, context, warned)),
-    ...digests.flatMap((payload): Block[] => [{ type: 'rule' }, ...digestBlocks(payload, context)]),
+    ...digests.flatMap((payload, index): Block[] => [...(told > 0 || index > 0 ? [{ type: 'rule' } as const] : []), ...digestBlocks(payload, context)]),
     ...tests.map((): Block => ({ type: 'prose', text: 'You asked whether messages arrive: they do.' })),
     { type: 'rule' },
     { type: 'foot', text: 'They were owed together, so they come as one mail. Where local law or licensed practice says otherwise, follow it.' },
