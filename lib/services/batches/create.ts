@@ -4,23 +4,19 @@ import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
 import type { BatchBody, CreateBatch } from '@/lib/contracts/batches';
-import { InvalidError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { notifyChange } from '../changes';
 import { loadVersionById } from '../musts/load';
+import { notAhead } from '../not-ahead';
 import { loadSensor, placeSensor } from '../sensors/place';
 import { getBatch } from './get';
-
-/** A clock that is a little ahead is no reason to refuse a pitch. */
-const AHEAD_MS = 10 * 60_000;
 
 /** Starts a batch. A pitch is also the first line of its log; a sensor counts from the pitch on. */
 export async function createBatch(actor: Actor, input: CreateBatch, clock: Clock = systemClock): Promise<BatchBody> {
   authorize(actor, 'batches.create');
   if (input.sensor !== null) authorize(actor, 'sensors.assign');
   const now = clock.now();
-  const pitchedAt = input.pitched_at === null ? null : new Date(input.pitched_at);
-  if (pitchedAt && pitchedAt.getTime() > now + AHEAD_MS) throw new InvalidError('The pitch lies ahead.', { pitched_at: ['lies ahead; leave it empty and log the pitch when it is done'] });
+  const pitchedAt = input.pitched_at === null ? null : notAhead(input.pitched_at, now, 'pitched_at', 'lies ahead; leave it empty and log the pitch when it is done');
 
   return inTransaction(async (transaction) => {
     if (input.must_version_id !== null) await loadVersionById(actor.cellarId, input.must_version_id, transaction);

@@ -8,6 +8,7 @@ import { createBatch as batchForm, type BatchBody, type UpdateBatch } from '@/li
 import { InvalidError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { notifyChange } from '../changes';
+import { notAhead } from '../not-ahead';
 import { takeOut } from '../sensors/place';
 import { getBatch } from './get';
 import { loadBatch } from './load';
@@ -73,8 +74,7 @@ export async function updateBatch(actor: Actor, id: string, input: UpdateBatch, 
 
 /** The pitch is a line of the log: it moves there, appears there, or is taken back there. */
 async function movePitch(actor: Actor, batch: Batch, to: string | null, now: Date, transaction: Transaction): Promise<void> {
-  const at = to === null ? null : new Date(to);
-  if (at && at > now) throw new InvalidError('The pitch lies ahead.', { pitched_at: ['lies ahead'] });
+  const at = to === null ? null : notAhead(to, now.getTime(), 'pitched_at');
   batch.set('pitchedAt', at);
   const entry = await Entry.findOne({ where: { batchId: batch.id, kind: 'pitch', removedAt: { [Op.is]: null } }, order: [['at', 'DESC']], transaction });
   if (entry && at) await entry.update({ at }, { transaction });

@@ -16,6 +16,7 @@ import { notifyChange } from '../changes';
 import { ledgerOf } from '../drink/ledger';
 import { broughtBy } from './brought';
 import { answerJobs } from '../jobs/answer';
+import { notAhead } from '../not-ahead';
 import { applyEntry, takeAsOriginal } from './effects';
 import { namesOf } from './names';
 import { quieten, saidThen } from './overrule';
@@ -35,8 +36,6 @@ const ACTION: Record<(typeof LOGGED_KINDS)[number], Action> = {
   overrule: 'entries.alter',
 };
 
-/** A clock that is a little ahead is no reason to refuse. */
-const AHEAD_MS = 10 * 60_000;
 /** Where the correction for temperature holds, °C. */
 const CORRECTED_C = { min: 0, max: 40 };
 
@@ -91,8 +90,7 @@ function kept({ detail, gravity }: CreateEntry, original: boolean, said: NonNull
  */
 export async function createEntry(actor: Actor, batchId: string, input: CreateEntry, clock: Clock = systemClock): Promise<EntryBody> {
   authorize(actor, ACTION[input.kind]);
-  const at = new Date(input.at);
-  if (at.getTime() > clock.now() + AHEAD_MS) throw new InvalidError('The time lies ahead.', { at: ['lies ahead'] });
+  const at = notAhead(input.at, clock.now());
 
   return inTransaction(async (transaction) => {
     // The lock makes the same entry sent twice at once wait for the first.

@@ -10,14 +10,13 @@ import { auditBy } from '../audit/write';
 import { loadBatch } from '../batches/load';
 import { notifyChange } from '../changes';
 import { iso } from '../iso';
+import { notAhead } from '../not-ahead';
 import { gravityOf } from './create';
 import { broughtBy } from './brought';
 import { followOriginal, settleBatch } from './effects';
 import { namesOf } from './names';
 import { mayRemove, presentEntry } from './present';
 import { partOfWork } from './work';
-
-const AHEAD_MS = 10 * 60_000;
 
 export type Before = RevisionList['items'][number]['before'];
 
@@ -41,7 +40,7 @@ function before(entry: Entry): Before {
 export async function updateEntry(actor: Actor, batchId: string, entryId: string, input: UpdateEntry, clock: Clock = systemClock): Promise<EntryBody> {
   authorize(actor, 'entries.remove-own');
   const now = new Date(clock.now());
-  if (input.at !== undefined && Date.parse(input.at) > now.getTime() + AHEAD_MS) throw new InvalidError('The time lies ahead.', { at: ['lies ahead'] });
+  const at = input.at === undefined ? undefined : notAhead(input.at, now.getTime());
   return inTransaction(async (transaction) => {
     const batch = await loadBatch(actor.cellarId, batchId, transaction);
     const entry = await Entry.findOne({ where: { id: entryId, batchId, removedAt: { [Op.is]: null } }, transaction });
@@ -60,7 +59,7 @@ export async function updateEntry(actor: Actor, batchId: string, entryId: string
     const detail = input.detail === undefined ? was.detail : withMarks(input.detail, was.detail);
     const remeasured = input.gravity !== undefined || input.temperature_c !== undefined || input.calibrated_at_c !== undefined || input.detail !== undefined;
     entry.set({
-      at: input.at === undefined ? entry.at : new Date(input.at),
+      at: at ?? entry.at,
       text: input.text !== undefined ? input.text : entry.text,
       gravityRead: read,
       temperatureC: temperature,

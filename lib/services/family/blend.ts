@@ -14,7 +14,8 @@ import { ConflictError, InvalidError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { getBatch } from '../batches/get';
 import { notifyChange } from '../changes';
-import { knownContents, link, loadBatches, notAhead, pourOut, sentBefore, shownReadout } from './flow';
+import { notAhead } from '../not-ahead';
+import { knownContents, link, loadBatches, pourOut, sentBefore, shownReadout } from './flow';
 
 const SLACK_L = 1e-6;
 

@@ -14,13 +14,6 @@ import { takeOut } from '../sensors/place';
 const SLACK_L = 1e-6;
 /** What is left below this is a wet glass. */
 const EMPTY_L = 0.005;
-const AHEAD_MS = 10 * 60_000;
-
-export function notAhead(at: string, now: number): Date {
-  const date = new Date(at);
-  if (date.getTime() > now + AHEAD_MS) throw new InvalidError('The time lies ahead.', { at: ['lies ahead'] });
-  return date;
-}
 
 /** What stands in the vessel, as masses; null where nobody has told its gravity, so that there is nothing to reckon from. */
 export async function contentsIn(batch: Batch, at: Date, transaction: Transaction): Promise<Contents | null> {

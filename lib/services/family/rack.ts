@@ -15,7 +15,8 @@ import { notifyChange } from '../changes';
 import { namesOf } from '../entries/names';
 import { presentEntry } from '../entries/present';
 import { answerJobs } from '../jobs/answer';
-import { contentsIn, inflowOf, loadBatches, notAhead, pourIn, sentBefore, shownReadout, type Inflow } from './flow';
+import { notAhead } from '../not-ahead';
+import { contentsIn, inflowOf, loadBatches, pourIn, sentBefore, shownReadout, type Inflow } from './flow';
 
 const SLACK_L = 1e-6;
 

@@ -12,7 +12,8 @@ import { loadBatch } from '../batches/load';
 import { notifyChange } from '../changes';
 import { detailOf } from '../drink/ledger';
 import { drinkState } from '../drink/state';
-import { lessen, link, notAhead, pourOut, sentBefore } from './flow';
+import { notAhead } from '../not-ahead';
+import { lessen, link, pourOut, sentBefore } from './flow';
 
 const SLACK_L = 1e-6;
 

@@ -5,16 +5,16 @@ import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
 import type { FiningBody, FiningForm } from '@/lib/contracts/family';
-import { ConflictError, InvalidError } from '@/lib/errors';
+import { ConflictError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { loadBatch } from '../batches/load';
 import { notifyChange } from '../changes';
 import { detailOf } from '../drink/ledger';
+import { notAhead } from '../not-ahead';
 import { finingNamed, logDose, waitToSettle } from './dose';
 import { presentFining } from './present';
 
 const MINUTE_MS = 60_000;
-const AHEAD_MS = 10 * MINUTE_MS;
 
 /** Fines a batch. Of two doses the second gets a timer that is on the rounds to the minute; of one the wait begins. */
 export function startFining(actor: Actor, batchId: string, input: FiningForm, clock: Clock = systemClock): Promise<FiningBody> {
@@ -25,8 +25,7 @@ export function startFining(actor: Actor, batchId: string, input: FiningForm, cl
 export async function finingIn(actor: Actor, batchId: string, input: FiningForm, clock: Clock, transaction: Transaction): Promise<FiningBody> {
   authorize(actor, 'cellarwork.do');
   const fining = finingNamed(input.fining);
-  const at = new Date(input.at);
-  if (at.getTime() > clock.now() + AHEAD_MS) throw new InvalidError('The time lies ahead.', { at: ['lies ahead'] });
+  const at = notAhead(input.at, clock.now());
   const batch = await loadBatch(actor.cellarId, batchId, transaction);
   const known = input.client_id === null ? null : await Entry.findOne({ where: { cellarId: actor.cellarId, clientId: input.client_id }, transaction });
   if (known) {

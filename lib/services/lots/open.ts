@@ -8,7 +8,7 @@ import type { LotBody, OpenBottles } from '@/lib/contracts/lots';
 import { ConflictError, InvalidError, NotFoundError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { notifyChange } from '../changes';
-import { notAhead } from '../family/flow';
+import { notAhead } from '../not-ahead';
 import { getLot } from './get';
 import { markGushed } from './gushed';
 import { loadBottle, loadLot } from './load';

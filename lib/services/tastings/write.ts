@@ -9,9 +9,9 @@ import { ConflictError, ForbiddenError, NotFoundError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { notifyChange } from '../changes';
 import { namesOf } from '../entries/names';
-import { notAhead } from '../family/flow';
 import { markGushed } from '../lots/gushed';
 import { loadLot } from '../lots/load';
+import { notAhead } from '../not-ahead';
 import { mayRemoveTasting, presentTasting } from './present';
 import { summaryOf } from './summary';
 
