@@ -22,11 +22,15 @@ function numberOf(text: string): number {
   return over ? Number(whole ?? 0) + Number(over) / Number(under) : Number(text);
 }
 
+const MOST_LETTERS = 80;
+
 /**
  * An amount as a person writes it: `340`, `1/2`, `1 ½`, `half`, `about 0.5`, `300 to 380`,
  * `340 (300 to 380)`. Null where it is none of these, or not a number of things.
  */
 export function amountOf(text: string): Range | null {
+  // No amount is so long, and the pattern below weighs every way to split a long run of digits.
+  if (text.length > MOST_LETTERS) return null;
   const signs = text.replace(/[¼½¾⅓⅔]/g, (sign) => FRACTIONS[sign] ?? sign);
   const plain = inFigures(signs.replace(/,/g, '.').trim().toLowerCase()).trim();
   const match = new RegExp(`^(about|ca\\.?|~|≈)?\\s*(${NUMBER})(?:\\s*\\(?\\s*(?:(${NUMBER})\\s*)?(?:to|[-–])\\s*(${NUMBER})\\s*\\)?)?$`).exec(plain);
