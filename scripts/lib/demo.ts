@@ -1,5 +1,6 @@
 import type { Sequelize, Transaction } from 'sequelize';
 import { Assignment, Cellar, Membership, Person, Sensor } from '@/db/models';
+import { saveMessageTimes } from '@/db/queries/messages';
 import { ensurePartitions, monthOf, type Month } from '@/db/queries/partitions';
 import { recordReadings, type ReadingRow } from '@/db/queries/record-readings';
 import { DEMO_BATCHES, DEMO_CELLAR_NAME, DEMO_PASSPHRASE, DEMO_PEOPLE } from '@/db/seed/demo';
@@ -74,6 +75,8 @@ async function writeHousehold(timeZone: string, passwordHash: string, since: Dat
     await Membership.create({ cellarId: cellar.id, personId: person.id, role }, { transaction });
     people.set(name, person.id);
     actors.set(role, { cellarId: cellar.id, personId: person.id, role });
+    // The keeper sleeps, and reads how everything stands in the morning.
+    if (role === 'keeper') await saveMessageTimes(person.id, { quiet: { fromMin: 0, toMin: 6 * 60 }, digestMin: 7 * 60 }, transaction);
   }
   return { cellarId: cellar.id, people, brewer: actors.get('brewer')!, hand: actors.get('hand')!, places: await writePlaces(cellar.id, since, transaction) };
 }
