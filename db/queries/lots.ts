@@ -113,7 +113,18 @@ export function findLots(filter: LotFilter, transaction?: Transaction): Promise<
   );
 }
 
-/** The next code of the year: `26-041`. Two people who bottle at once are kept apart by the table. */
+/** Until the transaction ends nobody else gives a code in this cellar: two who bottle at once get one each. */
+export async function lockCodes(cellarId: string, transaction: Transaction): Promise<void> {
+  await database().query('select pg_advisory_xact_lock(hashtextextended($key, 0))', { bind: { key: `lot-code:${cellarId}` }, transaction });
+}
+
+/** Codes are one however they are written. */
+export async function codeTaken(cellarId: string, code: string, transaction: Transaction): Promise<boolean> {
+  const rows = await database().query('select 1 from lots where cellar_id = $cellarId and lower(code) = lower($code)', { bind: { cellarId, code }, type: QueryTypes.SELECT, transaction });
+  return rows.length > 0;
+}
+
+/** The next code of the year: `26-041`. */
 export async function nextCode(cellarId: string, at: Date, transaction?: Transaction): Promise<string> {
   const year = String(at.getUTCFullYear() % 100).padStart(2, '0');
   const [row] = await database().query<{ last: number }>(

@@ -1,7 +1,7 @@
 import type { Transaction } from 'sequelize';
 import { inTransaction } from '@/db/client';
 import { Entry, Lot, LotBottle, type Batch } from '@/db/models';
-import { addBottles, nextCode } from '@/db/queries/lots';
+import { addBottles, codeTaken, lockCodes, nextCode } from '@/db/queries/lots';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
@@ -102,6 +102,7 @@ interface Bottling {
 }
 
 async function writeLot({ actor, batch, input, state, request, judged, at, now, standsC }: Bottling, transaction: Transaction): Promise<Lot> {
+  await lockCodes(actor.cellarId, transaction);
   const code = input.code ?? (await nextCode(actor.cellarId, at, transaction));
   if (await codeTaken(actor.cellarId, code, transaction)) throw new InvalidError('This code is taken.', { code: ['another lot has it'] });
   const override = judged.verdict === 'overridden' ? judged : null;
@@ -129,8 +130,6 @@ async function writeLot({ actor, batch, input, state, request, judged, at, now, 
     { transaction },
   );
 }
-
-const codeTaken = async (cellarId: string, code: string, transaction: Transaction) => (await Lot.count({ where: { cellarId, code }, transaction })) > 0;
 
 function strengthOf(state: DrinkState, request: BenchRequest, added: number): Range | null {
   const og = state.ledger.effectiveOg;
