@@ -10,6 +10,7 @@ import { ACIDS, acidDose, tanninDose, USUAL_ACID, USUAL_PH, type Acid } from '@/
 import { FED_LATELY_MS, NUTRIENTS, nutrientPlan, type Nutrient } from '@/lib/core/additions/nutrients';
 import { MOLECULAR_TARGETS, SULPHITE_SALTS, sulphiteDose, type SulphiteSalt } from '@/lib/core/sulphite/dose';
 import { Dose, type Told } from './Dose';
+import { Sugar } from './Sugar';
 
 const isNumber = (value: number | null | undefined): value is number => typeof value === 'number' && Number.isFinite(value);
 const figure = (value: number | null | undefined, digits: number) => (isNumber(value) ? String(Number(value.toFixed(digits))) : '');
@@ -172,6 +173,7 @@ export function Additions({ kind, ...props }: Props & { kind: DrinkKind }) {
     <div className="max-w-[760px]">
       <p className="type-reason text-ink2">Your country’s law and the packet go before any figure here.</p>
       <Nutrients {...props} />
+      <Sugar {...props} />
       <Sulphite {...props} />
       <Acids {...props} kind={kind} />
       <Tannin {...props} />

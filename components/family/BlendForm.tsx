@@ -44,7 +44,7 @@ export function BlendForm({ batch, now, timeZone }: { batch: BatchBody; now: num
 
   if (answer) {
     return (
-      <section aria-live="polite" className="max-w-[600px] border-l-[3px] border-green bg-lit py-2 pl-3">
+      <section aria-live="polite" className="max-w-[600px] self-start border-l-[3px] border-green bg-lit py-2 pl-3">
         <p className="type-verdict">Done and logged.</p>
         <p className="type-body">
           <Link href={`/batches/${answer.batch.id}`}>{answer.batch.name}</Link>

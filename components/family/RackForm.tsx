@@ -26,7 +26,7 @@ type What = '' | 'water' | 'must' | 'drink' | 'batch';
 function Effect({ moved }: { moved: MovedBody }) {
   const { effect } = moved;
   return (
-    <section aria-live="polite" className="max-w-[600px] border-l-[3px] border-green bg-lit py-2 pl-3">
+    <section aria-live="polite" className="max-w-[600px] self-start border-l-[3px] border-green bg-lit py-2 pl-3">
       <p className="type-verdict">Done and logged.</p>
       {effect ? (
         <>

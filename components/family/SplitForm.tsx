@@ -39,7 +39,7 @@ export function SplitForm({ batch, now, timeZone }: { batch: BatchBody; now: num
 
   if (answer) {
     return (
-      <section aria-live="polite" className="max-w-[600px] border-l-[3px] border-green bg-lit py-2 pl-3">
+      <section aria-live="polite" className="max-w-[600px] self-start border-l-[3px] border-green bg-lit py-2 pl-3">
         <p className="type-verdict">Done and logged.</p>
         <p className="type-body">
           <Sentence>{answer.batch.state === 'ended' ? `Nothing is left of ${batch.name}: its log has ended.` : `${litres(answer.batch.volume_l)} stays in ${batch.name}.`}</Sentence>

@@ -12,7 +12,7 @@ import { useMe } from '@/lib/client/me';
 import { removeFromCatalogue, useCatalogue } from '@/lib/client/musts';
 import type { CatalogueBody } from '@/lib/contracts/catalogue';
 import { INGREDIENT_KINDS } from '@/lib/core/must/ingredients';
-import { IngredientRow, YeastRow } from './CatalogueRow';
+import { CatalogueHead, IngredientRow, YeastRow } from './CatalogueRow';
 import { draftOfIngredient, draftOfKind, draftOfYeast, emptyYeast } from './own-draft';
 import { IngredientOfOurs, YeastOfOurs } from './OwnForms';
 import { KIND_WORDS } from './words';
@@ -65,7 +65,7 @@ export function CataloguePage() {
   const yeasts = ownFirst(catalogue?.yeasts ?? []);
   return (
     <>
-      <PageHead title="Catalogue" meta="Sugar, what of it ferments, nitrogen: usual figures. A label or a measurement goes before them; a sheet keeps what it was written with.">
+      <PageHead title="Catalogue" meta="Usual figures; a label or a measurement goes before them.">
         <div className="flex flex-wrap gap-2">
           <LinkButton look="quiet" href="/musts">
             To the sheets
@@ -92,6 +92,7 @@ export function CataloguePage() {
         <EmptyState title="Nothing has that name">{write ? 'Add it as your own.' : 'A brewer can add it.'}</EmptyState>
       ) : (
         <>
+          {ingredients.length > 0 && <CatalogueHead />}
           {INGREDIENT_KINDS.map((kind) => {
             const items = ingredients.filter((item) => item.kind === kind);
             return (

@@ -11,7 +11,7 @@ type Ingredient = CatalogueBody['ingredients'][number];
 type Yeast = CatalogueBody['yeasts'][number];
 
 /** Name, three figures, what else it holds, where it is from, and what may be done with it. */
-export const COLUMNS = 'wide:grid-cols-[minmax(0,1.4fr)_8.5rem_8.5rem_9rem_minmax(0,1fr)_3rem_13rem]';
+const COLUMNS = 'wide:grid-cols-[minmax(0,1.4fr)_8.5rem_8.5rem_9rem_minmax(0,1fr)_3rem_13rem]';
 
 function Figure({ name, says }: { name: string; says: string | null }) {
   return (
@@ -26,6 +26,17 @@ function Figure({ name, says }: { name: string; says: string | null }) {
   );
 }
 
+/** Over the columns of a wide page; on a narrow one each figure has its name beside it. */
+export const CatalogueHead = () => (
+  <div aria-hidden className={`type-label hidden gap-x-4 border-b bg-desk px-(--margin) py-1 text-ink2 wide:grid ${COLUMNS}`}>
+    <span>name</span>
+    <span>sugar</span>
+    <span>of it ferments</span>
+    <span>nitrogen</span>
+    <span>what else</span>
+  </div>
+);
+
 function Row({ name, own, figures, holds, origin, children }: { name: string; own: boolean; figures: readonly (readonly [string, string | null])[]; holds: string; origin: ReactNode; children: ReactNode }) {
   return (
     <li className={`border-b border-rule px-(--margin) py-1.5 wide:grid wide:items-center wide:gap-x-4 ${COLUMNS}`}>
@@ -39,14 +50,16 @@ function Row({ name, own, figures, holds, origin, children }: { name: string; ow
         ))}
       </div>
       <p className="type-label text-ink2">{holds}</p>
-      <div className="has-[details[open]]:col-span-full">{origin}</div>
-      <div className="flex flex-wrap justify-end gap-2">{children}</div>
+      <div className="flex flex-wrap items-center justify-between gap-x-3 wide:contents">
+        <div className="has-[details[open]]:col-span-full max-wide:has-[details[open]]:basis-full">{origin}</div>
+        <div className="flex flex-wrap justify-end gap-2">{children}</div>
+      </div>
     </li>
   );
 }
 
 const percent = (share: Range, unit: string) => (share.hi === 0 ? null : `${ends(times(share, 100), 1).replaceAll('.0', '')} ${unit}`);
-const nitrogen = ({ yan_mg_per_g: range }: Ingredient) => (range.hi === 0 ? null : `${ends(range, range.hi < 3 ? 2 : 0)} mg/g`);
+const nitrogen = ({ yan_mg_per_g: range }: Ingredient) => (range.hi === 0 ? null : `${ends(range, range.hi < 1 ? 2 : range.hi < 3 ? 1 : 0)} mg/g`);
 
 /** What else is to be known of it, in words. */
 function holdsOf(item: Ingredient): string {

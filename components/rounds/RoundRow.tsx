@@ -126,12 +126,15 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
       ) : (
         mayDo && (
           <div className="not-printed flex flex-wrap items-center justify-end gap-2 strip:max-w-[55%] strip:shrink-0">
-            {later &&
-              laterTimes(now, timeZone).map((time) => (
-                <Button key={time.name} look="quiet" disabled={busy} onClick={() => void send(() => snoozeJob(job, new Date(time.at * 1000).toISOString()))}>
-                  {time.name}
-                </Button>
-              ))}
+            {later && (
+              <div role="group" aria-label={`Put off until: ${job.title}`} className="flex flex-wrap gap-2 max-strip:grid max-strip:w-full max-strip:grid-cols-2">
+                {laterTimes(now, timeZone).map((time) => (
+                  <Button key={time.name} look="quiet" disabled={busy} onClick={() => void send(() => snoozeJob(job, new Date(time.at * 1000).toISOString()))}>
+                    {time.name}
+                  </Button>
+                ))}
+              </div>
+            )}
             <Button look="quiet" aria-expanded={later} aria-label={`Put off: ${job.title}`} onClick={() => setLater(!later)}>
               {later ? 'not later' : 'later'}
             </Button>

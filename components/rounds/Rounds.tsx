@@ -81,7 +81,7 @@ function Walk({ now, timeZone, me, mayDo }: { now: number; timeZone: string; me:
       ) : !jobs ? (
         <Haze height={200} className="m-(--margin)" label="Loading the jobs" />
       ) : shown === 'done' ? (
-        <DoneList jobs={done.jobs} now={now} timeZone={timeZone} />
+        <DoneList jobs={done.jobs} error={done.error} retry={done.retry} now={now} timeZone={timeZone} />
       ) : stops.length === 0 ? (
         <EmptyState title={shown === 'today' ? 'Nothing due today.' : 'Nothing is coming yet.'}>{shown === 'today' && next !== undefined ? `Next: ${when(next, now, timeZone)}.` : 'Jobs come from the calls, from clocks, and from people.'}</EmptyState>
       ) : (
@@ -110,7 +110,14 @@ function Walk({ now, timeZone, me, mayDo }: { now: number; timeZone: string; me:
   );
 }
 
-function DoneList({ jobs, now, timeZone }: { jobs: ReturnType<typeof useJobs>['jobs']; now: number; timeZone: string }) {
+function DoneList({ jobs, error, retry, now, timeZone }: Pick<ReturnType<typeof useJobs>, 'jobs' | 'error' | 'retry'> & { now: number; timeZone: string }) {
+  if (error && !jobs) {
+    return (
+      <ErrorState title="What was done did not load" onRetry={retry}>
+        {error.message}
+      </ErrorState>
+    );
+  }
   if (!jobs) return <Haze height={120} className="m-(--margin)" label="Loading what was done" />;
   if (jobs.length === 0) return <EmptyState title="Nothing ticked yet.">What is done stays here with its time and who did it.</EmptyState>;
   const newest = [...jobs].sort((a, b) => (b.done_at ?? '').localeCompare(a.done_at ?? ''));
