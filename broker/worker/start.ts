@@ -49,7 +49,7 @@ export function startWorker({ spacingMs, tickMs, idleMs, sendTimeoutMs }: Worker
   const delivering = startDelivering();
   const recalculating = startRecalculating();
   const stopPartitions = keepPartitionsAhead();
-  const tidy = () => void dropWhatIsOld().catch((error: unknown) => log.warn({ err: error }, 'old rows could not be dropped; tried again in an hour'));
+  const tidy = () => void dropWhatIsOld();
   tidy();
   const tidying = setInterval(tidy, HOUSEKEEPING_MS);
   const digesting = setInterval(

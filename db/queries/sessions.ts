@@ -48,3 +48,8 @@ export async function openSessions(signInIds: readonly string[]): Promise<OpenSi
 export async function markSeen(signInId: string, everyS: number): Promise<void> {
   await database().query(`update sign_ins set last_seen_at = now() where id = $signInId and last_seen_at < now() - make_interval(secs => $everyS)`, { bind: { signInId, everyS } });
 }
+
+/** Drops sign-ins that ended, or ran out, so long ago. */
+export async function forgetOldSignIns(days: number): Promise<void> {
+  await database().query(`delete from sign_ins where least(expires_at, coalesce(ended_at, expires_at)) < now() - make_interval(days => $days)`, { bind: { days } });
+}
