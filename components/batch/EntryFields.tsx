@@ -3,6 +3,7 @@
 import { Choice } from '@/components/ui/Choice';
 import { Field, Select, TextField } from '@/components/ui/Field';
 import { Sentence } from '@/components/ui/Sentence';
+import { hydrometerMarks } from '@/components/ui/units';
 import { UnitField } from '@/components/units/UnitField';
 import { CLARITIES, SUBSTANCES } from '@/lib/contracts/batches';
 import { FOAMS, NECKS } from '@/lib/core/types';
@@ -64,7 +65,7 @@ export function EntryFields({ draft, errors, latest, known, onChange }: EntryFie
         {...text('temperature')}
       />
     ),
-    calibratedAt: <UnitField measure="temperature" label="Hydrometer made for" hint={<Sentence>Printed on it: 20 °C, often 15.6 °C on older ones.</Sentence>} {...text('calibratedAt')} />,
+    calibratedAt: <UnitField measure="temperature" label="Hydrometer made for" hint={`Printed on it: ${hydrometerMarks().join(', often ')} on older ones.`} {...text('calibratedAt')} />,
     ph: <Field label="pH, if measured" placeholder="3.4" {...figure('ph')} />,
     bubbles: <Field label="Bubbles a minute" placeholder="12" {...figure('bubbles')} />,
     foam: <Choice label="Foam" value={draft.foam} onChoose={(foam) => onChange({ foam })} options={open(FOAMS, FOAM_WORDS)} />,

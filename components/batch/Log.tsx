@@ -82,7 +82,7 @@ function Row({ row, batchId, now, timeZone, onCorrect }: RowProps) {
   const [before, setBefore] = useState(false);
   const { entry } = row;
   return (
-    <li className="arrives grid grid-cols-[22px_minmax(0,1fr)_auto] items-baseline gap-x-2 gap-y-0.5 border-b border-rule py-[7px] strip:grid-cols-[98px_22px_minmax(0,1fr)_auto_52px_92px]">
+    <li className="arrives grid grid-cols-[22px_minmax(0,1fr)_auto] items-baseline gap-x-2 gap-y-0.5 border-b border-rule py-[7px] strip:grid-cols-[98px_22px_minmax(0,1fr)_auto_68px_92px]">
       <span className="row-start-1 translate-y-[3px] strip:col-start-2">
         <LogIcon kind={row.kind} />
         <span className="heard-only">{LOG_KIND_WORDS[row.kind]}</span>
@@ -117,7 +117,7 @@ function Row({ row, batchId, now, timeZone, onCorrect }: RowProps) {
         )}
         {row.mine && <TakeBack batchId={batchId} entryId={row.id} />}
       </span>
-      <span className="row-start-1 text-right font-mono text-[0.84375rem] font-semibold max-strip:col-start-3 strip:col-start-5">{row.figure}</span>
+      <span className="row-start-1 whitespace-nowrap text-right font-mono text-[0.84375rem] font-semibold max-strip:col-start-3 strip:col-start-5">{row.figure}</span>
       <span className="type-label truncate text-[0.71875rem] text-ink2 max-strip:hidden strip:col-start-6 strip:text-right" title={row.who}>
         {row.who}
       </span>

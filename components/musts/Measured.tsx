@@ -7,6 +7,7 @@ import { Choice } from '@/components/ui/Choice';
 import { Field } from '@/components/ui/Field';
 import { How } from '@/components/ui/How';
 import { Sentence } from '@/components/ui/Sentence';
+import { hydrometerMarks } from '@/components/ui/units';
 import { UnitField } from '@/components/units/UnitField';
 import { State } from '@/components/ui/StateMark';
 import { camelKeys } from '@/lib/contracts/case';
@@ -91,7 +92,7 @@ export function Measured({ must, keptAs, mayStart }: { must: MustBody; keptAs: s
         )}
         <div className="grid grid-cols-2 gap-3">
           <UnitField measure="temperature" label="Sample" value={sample} onChange={set('sample')} hint={instrument === 'refractometer' ? 'Empty: it corrects itself.' : undefined} />
-          {instrument === 'hydrometer' && <UnitField measure="temperature" label="Hydrometer made for" value={calibration} onChange={set('calibration')} hint={<Sentence>20 °C, or 15.6 °C on older ones.</Sentence>} />}
+          {instrument === 'hydrometer' && <UnitField measure="temperature" label="Hydrometer made for" value={calibration} onChange={set('calibration')} hint={`${hydrometerMarks().join(', or ')} on older ones.`} />}
         </div>
         <div aria-live="polite">
           {measured && !measured.ok && <p className="type-body border-l-[3px] border-madder pl-3"><Sentence>{measured.sentence}</Sentence></p>}

@@ -54,6 +54,8 @@ export function gravityDoubt(sg: number, half: number, units = chosen): string {
 export const temperatureText = (celsius: number, digits = 1, units = chosen): string => `${temperatureNumber(celsius, digits, units)} ${temperatureName(units)}`;
 export const temperatureNumber = (celsius: number, digits = 1, units = chosen): string => minus((Number((units.temperature === 'f' ? fahrenheitOf(celsius) : celsius).toFixed(digits)) || 0).toFixed(digits));
 export const temperatureName = (units = chosen): string => (units.temperature === 'f' ? '°F' : '°C');
+/** What hydrometers are made for, as it is printed on them: of late, and on older ones. */
+export const hydrometerMarks = (units = chosen): readonly [string, string] => (units.temperature === 'f' ? ['68 °F', '60 °F'] : ['20 °C', '15.6 °C']);
 /** A difference of temperatures, which has no nought of its own. */
 export const temperatureSpan = (celsius: number, units = chosen): number => (units.temperature === 'f' ? celsius * 1.8 : celsius);
 
