@@ -113,7 +113,7 @@ describe('the program’s jobs', () => {
     await sync(batch, judged(cold));
     const [job] = (await listJobs(hand, open, clockAt())).items;
     expect(await takeJob(hand, job!.id, true, clockAt())).toMatchObject({ taken_by: { id: hand.personId } });
-    expect(await Alert.findByPk(alert.id)).toMatchObject({ state: 'acknowledged', acknowledgedBy: hand.personId });
+    expect(await Alert.findByPk(alert.id)).toMatchObject({ state: 'acknowledged', acknowledgedBy: hand.personId, acknowledgedAt: new Date(NOON) });
     expect(await takeJob(hand, job!.id, false, clockAt())).toMatchObject({ taken_by: null });
     await sync(batch, judged(cold), NOON + HOUR);
     expect((await listJobs(hand, open, clockAt())).items[0]).toMatchObject({ taken_by: { id: hand.personId } });

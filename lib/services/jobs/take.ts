@@ -27,7 +27,12 @@ export async function takeJob(actor: Actor, id: string, taken: boolean, clock: C
     const open = taken && call && job.batchId ? await Alert.findAll({ where: { batchId: job.batchId, call, state: 'open' }, transaction }) : [];
     return { body: await jobBody(actor.cellarId, id, transaction), alerts: open };
   });
-  // Whoever has the job has the alert that it comes from; it asks nobody else any more.
-  for (const alert of alerts) await acknowledgeAlert(actor, alert.id, { note: null, look_again_at: null });
+  // Whoever has the job has the alert that it comes from; it asks nobody else any more. The watch locks alerts before
+  // jobs: so only now, and one that has passed meanwhile wants nobody.
+  for (const alert of alerts) await acknowledgeAlert(actor, alert.id, { note: null, look_again_at: null }, { clock }).catch(unlessPassed);
   return body;
+}
+
+function unlessPassed(error: unknown): void {
+  if (!(error instanceof ConflictError)) throw error;
 }
