@@ -11,7 +11,7 @@ import { valueAt, written, type Curve, type Measure, type Point } from './curves
 import { between, DAY_S, dayTicks, heightOf, ticks, wholeOf } from './scales';
 
 const HEIGHT = 420;
-const [TOP, FOOT, LEFT] = [30, 34, 54];
+const [TOP, FOOT, LEFT] = [30, 42, 54];
 /** Room at the right for the names, on a wide page. */
 const NAMES = 190;
 const NAME_GAP = 17;
@@ -162,7 +162,7 @@ function Drawing({ curves, measure, span, width, right, wide, at, onCursor, onSp
           </text>
         </g>
       ))}
-      <text x={right} y={HEIGHT - 1} textAnchor="end" fontSize="11" fill="var(--ink2)">
+      <text x={right} y={HEIGHT - 6} textAnchor="end" fontSize="11" fill="var(--ink2)">
         days since the pitch
       </text>
       <path d={`M${LEFT} ${HEIGHT - FOOT}H${right}`} stroke="var(--ink)" strokeWidth="1.5" />
