@@ -88,29 +88,40 @@ function unpack(packed: number, first: 'gravity' | 'temperature', start: number)
   return { at: start + since, gravity: gravityOf(first === 'gravity' ? high : low), temperature: temperatureOf(first === 'gravity' ? low : high) };
 }
 
+/** A reading's place in its bucket has seven digits; a bucket of more seconds is asked for in parts. */
+const LONGEST_PART_S = PACK.offset - 1;
+const KINDS = [
+  ['g_low', 'gravity', -1],
+  ['g_high', 'gravity', 1],
+  ['t_low', 'temperature', -1],
+  ['t_high', 'temperature', 1],
+] as const;
+
 /**
  * A batch's readings in `[from, to)`, s since 1970: from each bucket of `widthS`
  * its lowest and highest in gravity and in temperature, in time. Gravities to
  * 0.00001, temperatures to 0.01 °C.
- * @param widthS whole seconds, under 1e7
+ * @param widthS whole seconds
  */
 export async function thinnedSeries(batchId: string, from: number, to: number, widthS: number): Promise<{ count: number; points: SeriesPoint[] }> {
-  const { rows } = await runPrepared<ThinnedRow>(database(), THINNED, [batchId, from, to, widthS]);
-  const points = new Map<number, SeriesPoint>();
+  const parts = Math.ceil(widthS / LONGEST_PART_S);
+  const partS = Math.ceil(widthS / parts);
+  const { rows } = await runPrepared<ThinnedRow>(database(), THINNED, [batchId, from, to, partS]);
+  const best = new Map<string, { value: number; point: SeriesPoint }>();
   let count = 0;
   for (const row of rows) {
     count += row.count;
-    const start = from + row.bucket * widthS;
-    const add = (packed: number | null, first: 'gravity' | 'temperature') => {
-      if (packed === null) return;
-      const point = unpack(packed, first, start);
-      points.set(point.at, point);
-    };
-    add(row.g_low, 'gravity');
-    add(row.g_high, 'gravity');
-    add(row.t_low, 'temperature');
-    add(row.t_high, 'temperature');
+    for (const [column, first, sign] of KINDS) {
+      const packed = row[column];
+      if (packed === null) continue;
+      const point = unpack(packed, first, from + row.bucket * partS);
+      const value = sign * (point[first] ?? 0);
+      const key = `${Math.floor(row.bucket / parts)} ${column}`;
+      const held = best.get(key);
+      if (!held || value > held.value) best.set(key, { value, point });
+    }
   }
+  const points = new Map([...best.values()].map(({ point }) => [point.at, point]));
   return { count, points: [...points.values()].sort((a, b) => a.at - b.at) };
 }
 

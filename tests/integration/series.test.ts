@@ -50,6 +50,22 @@ describe('the series of a batch', () => {
       expect(column[series.at.indexOf(START / 1000 + n * 900)]).toBeCloseTo(value, 5);
   });
 
+  it('keeps readings and extremes of years in a handful of points', async () => {
+    const days = 1_000;
+    const readings = Array.from({ length: days }, (_, n) => ({ at: START + n * DAY_S * 1000, gravity: n === 333 ? 0.985 : 1 + 0.1 * Math.exp(-n / 90), temperature: n === 777 ? 35 : 12 }));
+    const { actor, batch } = await batchWith(readings);
+    const series = await getSeries(actor, batch.id, { points: 10 });
+    expect(series.count).toBe(days);
+    expect(series.at.length).toBeLessThanOrEqual(10);
+    const taken = new Map(readings.map((reading) => [reading.at / 1000, reading]));
+    for (const [index, at] of series.at.entries()) {
+      expect(series.gravity[index]).toBeCloseTo(taken.get(at)?.gravity ?? NaN, 5);
+      expect(series.temperature[index]).toBeCloseTo(taken.get(at)?.temperature ?? NaN, 2);
+    }
+    const at = (n: number) => START / 1000 + n * DAY_S;
+    for (const n of [0, 333, 777, days - 1]) expect(series.at, `day ${n}`).toContain(at(n));
+  });
+
   it('shows only readings that were taken, in time, with the latest among them, however few points are asked for', async () => {
     const { actor, batch, sensor } = await batchWith([]);
     await fc.assert(
