@@ -42,7 +42,7 @@ function Running({ fining, now, timeZone, mayDo, onFail }: { fining: FiningBody;
           {waits && `: ${fining.parts[1] ?? ''}`}
         </p>
         <p className="type-reason text-ink2">
-          <Sentence>{`First dose ${at(fining.first_at)}.${fining.bright_from ? ` Look again ${at(fining.bright_from)}.` : ''} ${fining.caution}`}</Sentence>
+          <Sentence>{`First dose ${at(fining.first_at)}.${fining.state === 'waiting_for_second' ? ' Whoever put it in is told when the second is due.' : ''}${fining.bright_from ? ` Look again ${at(fining.bright_from)}.` : ''} ${fining.caution}`}</Sentence>
         </p>
       </div>
       {waits && due && (
@@ -144,6 +144,7 @@ export function Finings({ batchId, volumeL, now, timeZone, mayDo }: { batchId: s
         <h3 id="haze" className="type-sub border-b-[1.5px] border-ink pb-1">
           Still cloudy?
         </h3>
+        <p className="type-tick py-1 text-ink2">{HAZES[0]?.source}. Law and packet go before it.</p>
         {HAZES.map((haze) => (
           <details key={haze.cause} className="border-b">
             <summary className="type-name-low flex min-h-11 cursor-pointer flex-wrap items-baseline gap-x-3 py-2.5 strip:min-h-9">

@@ -43,7 +43,7 @@ const WITH_ADDITIONS = (drink: DrinkBody): HowAnswer =>
 
 const VOLUME_BY_LOG: HowAnswer = how('what was told at the pitch, with every racking, topping up, split, blend and bottling of the log since', SOURCES.told);
 
-const BY_WORDS = { float: 'the curve through the readings of its float', hydrometer: 'the last hydrometer reading, at 20 °C', refractometer: 'the last refractometer reading, with the alcohol reckoned in; good to 0.004' } as const;
+const BY_WORDS = { float: 'the curve through the readings of its float', hydrometer: 'the last hydrometer reading, at 20 °C', refractometer: 'the last refractometer reading, with the alcohol reckoned in; good to 0.004, and what alcohol adds to it is recalled, not checked' } as const;
 const GRAVITY_BY = ({ gravity_by: by, gravity_at: at }: DrinkBody): HowAnswer | undefined => (by ? how(BY_WORDS[by], SOURCES.told, [['at', at === null ? null : at.slice(0, 16).replace('T', ' '), 'UTC']]) : undefined);
 const LAST_TOLD: HowAnswer = how('the last that its sensor, or somebody with a thermometer, told', SOURCES.told);
 

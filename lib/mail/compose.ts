@@ -7,6 +7,7 @@ import { ingestMail } from './templates/ingest';
 import { lookAgain } from './templates/look-again';
 import { several } from './templates/several';
 import { testMail } from './templates/test';
+import { timerMail } from './templates/timer';
 
 const ALERT_TEMPLATES: Record<AlertPayload['event'], (payload: AlertPayload, context: RenderContext) => Rendered> = {
   opened: alertOpened,
@@ -27,6 +28,8 @@ export function compose(payloads: readonly MailPayload[], context: RenderContext
       return ingestMail(only, context);
     case 'digest':
       return digestMail(only, context);
+    case 'timer':
+      return timerMail(only, context);
     case 'test':
       return testMail(only, context);
   }

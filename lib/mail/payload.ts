@@ -50,14 +50,25 @@ const digestPayload = z.object({
   muted: z.array(z.object({ name: z.string(), until: z.string(), by: z.string().nullable() })),
 });
 
+/** A clock that somebody started has run down: the second dose of a fining. */
+const timerPayload = z.object({
+  template: z.literal('timer'),
+  due: z.string(),
+  title: z.string(),
+  note: z.string().nullable(),
+  batch: z.object({ id: z.string(), name: z.string(), tag: z.number().nullable(), place: z.string().nullable() }),
+  cellar: z.object({ name: z.string(), time_zone: z.string() }),
+});
+
 /** Somebody wants to see whether messages reach them. */
 const testPayload = z.object({ template: z.literal('test'), at: z.string(), time_zone: z.string() });
 
-export const mailPayload = z.discriminatedUnion('template', [alertPayload, ingestPayload, digestPayload, testPayload]);
+export const mailPayload = z.discriminatedUnion('template', [alertPayload, ingestPayload, digestPayload, timerPayload, testPayload]);
 export type MailPayload = z.infer<typeof mailPayload>;
 export type AlertPayload = z.infer<typeof alertPayload>;
 export type IngestPayload = z.infer<typeof ingestPayload>;
 export type DigestPayload = z.infer<typeof digestPayload>;
+export type TimerPayload = z.infer<typeof timerPayload>;
 export type TestPayload = z.infer<typeof testPayload>;
 
 /** A mail ready but for its address. */

@@ -1,4 +1,4 @@
-import type { AlertPayload, MailPayload } from '../mail/payload';
+import type { AlertPayload, MailPayload, TimerPayload } from '../mail/payload';
 import { stateOf } from '../mail/parts';
 import { bare, vesselName } from '../mail/words';
 
@@ -32,10 +32,22 @@ function about({ alert, batch, event }: AlertPayload): Notice {
   };
 }
 
+function ofTimer({ title, note, batch }: TimerPayload): Notice {
+  return { title: cut(`Now: ${title}`, 120), body: cut([vesselName(batch), note].filter(Boolean).join('. '), 400), url: '/rounds', tag: `timer-${batch.id}`, alert: null, urgent: true };
+}
+
 /** One notice for what one person is owed now. @param payloads at least one */
 export function composePush(payloads: readonly MailPayload[]): Notice {
   const alerts = payloads.filter((payload) => payload.template === 'alert').toSorted((a, b) => ORDER[a.alert.level] - ORDER[b.alert.level] || Date.parse(a.at) - Date.parse(b.at));
+  const timers = payloads.filter((payload) => payload.template === 'timer');
+  const [clock] = timers;
+  if (clock && alerts.length === 0 && timers.length === 1) return ofTimer(clock);
   const [first] = alerts;
+  if (clock) {
+    const lines = [...timers.map(({ title }) => cut(title, 110)), ...alerts.map(({ alert, batch }) => cut(`${vesselName(batch)}: ${bare(alert.headline)}`, 110))];
+    const more = lines.length - MOST_LINES;
+    return { ...ofTimer(clock), title: `Now, from ${clock.cellar.name}`, body: [...lines.slice(0, MOST_LINES), ...(more > 0 ? [`and ${more} more`] : [])].join('\n'), tag: 'several' };
+  }
   if (!first) return { title: 'Fallbright', body: 'Messages of the watch arrive on this device.', url: '/settings/messages', tag: 'test', alert: null, urgent: false };
   if (alerts.length === 1) return about(first);
   const lines = alerts.slice(0, MOST_LINES).map(({ alert, batch, event }) => cut(`${vesselName(batch)}: ${event === 'resolved' ? 'passed, ' : ''}${bare(alert.headline)}`, 110));

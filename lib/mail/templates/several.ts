@@ -5,6 +5,7 @@ import { bare, lasting, vesselName, when } from '../words';
 import { digestBlocks, digestSubject } from './digest';
 import { ingestMail } from './ingest';
 import { testMail } from './test';
+import { timerBlocks, timerSubject } from './timer';
 
 const ORDER = { act: 0, check: 1, know: 2 } as const;
 const EVENT_ORDER = { opened: 0, repeated: 1, look_again: 2, resolved: 3 } as const;
@@ -36,15 +37,20 @@ function item(payload: AlertPayload, context: RenderContext, warned: Set<string>
 export function several(payloads: readonly MailPayload[], context: RenderContext): Rendered {
   const alerts = payloads.filter((payload) => payload.template === 'alert').toSorted(byUrgency);
   const house = payloads.filter((payload) => payload.template === 'ingest');
+  const timers = payloads.filter((payload) => payload.template === 'timer');
   const digests = payloads.filter((payload) => payload.template === 'digest');
   const tests = payloads.filter((payload) => payload.template === 'test').slice(0, 1);
   const begun = alerts.filter((payload) => payload.event !== 'resolved');
   const urgent = begun.some((payload) => payload.alert.level === 'act');
   const lead = begun[0] ?? alerts[0];
-  const told = alerts.length + house.length;
+  const told = alerts.length + house.length + timers.length;
+  const [clock] = timers;
   const count = `${told} ${told === 1 ? 'message' : 'messages'}`;
   const first = digests[0];
-  const subject = lead
+  // A clock that has run down cannot wait; the rest can be read on.
+  const subject = clock
+    ? `${timerSubject(clock)}, and more`
+    : lead
     ? `${urgent ? 'Now: ' : ''}${count}: ${vesselName(lead.batch)}: ${bare(lead.alert.headline)}${told > 1 || first ? ', and more' : ''}`
     : told
       ? `${count} about readings that do not come in`
@@ -54,6 +60,7 @@ export function several(payloads: readonly MailPayload[], context: RenderContext
   const warned = new Set<string>();
   return render(subject, [
     ...(told ? [{ type: 'title', text: told > 1 ? `${count} at once` : count } as const] : []),
+    ...timers.flatMap((payload): Block[] => [{ type: 'rule' }, ...timerBlocks(payload, context)]),
     ...house.map((payload): Block => ({ type: 'prose', text: `${ingestMail(payload, context).subject} (${when(payload.at, payload.time_zone)}).` })),
     ...alerts.flatMap((payload) => item(payload, context, warned)),
     ...digests.flatMap((payload, index): Block[] => [...(told > 0 || index > 0 ? [{ type: 'rule' } as const] : []), ...digestBlocks(payload, context)]),

@@ -5,6 +5,7 @@ import { FININGS, type Fining } from '@/lib/core/additions/fining';
 import { ConflictError, InvalidError, NotFoundError } from '@/lib/errors';
 import { notifyChange } from '../changes';
 import { detailOf } from '../drink/ledger';
+import { ringForSecond, silenceSecond } from './ring';
 
 const DAY_MS = 86_400_000;
 
@@ -56,6 +57,7 @@ export async function giveSecond(actor: Actor, finingId: string, dose: Dose, tra
   if (run.secondAt !== null) return run;
   if (dose.at < run.firstAt) throw new InvalidError('The second dose cannot come before the first.', { at: ['is before the first dose'] });
   await run.update({ secondAt: dose.at }, { transaction });
+  await silenceSecond(run, transaction);
   await logDose(actor, run, 'b', dose, transaction);
   await Job.update({ doneAt: dose.at, doneBy: actor.personId }, { where: { finingId, kind: 'fining_b', doneAt: null, droppedAt: null }, transaction });
   await waitToSettle(run, dose.at, transaction);
@@ -73,5 +75,7 @@ export async function takeSecondBack(actor: Actor, finingId: string, transaction
     if (id === finingId && dose === 'b') await entry.update({ removedAt: new Date(), removedBy: actor.personId }, { transaction });
   }
   await Job.destroy({ where: { finingId, kind: 'settle', doneAt: null }, transaction });
+  const job = await Job.findOne({ where: { finingId, kind: 'fining_b' }, transaction });
+  if (job) await ringForSecond(run, { title: job.title, note: job.note ?? null, dueAt: job.snoozedUntil ?? job.dueAt }, transaction);
   await notifyChange({ cellar: actor.cellarId, kind: 'entry', batch: run.batchId }, transaction);
 }

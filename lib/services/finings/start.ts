@@ -13,6 +13,7 @@ import { detailOf } from '../drink/ledger';
 import { notAhead } from '../not-ahead';
 import { finingNamed, logDose, waitToSettle } from './dose';
 import { presentFining } from './present';
+import { ringForSecond } from './ring';
 
 const MINUTE_MS = 60_000;
 
@@ -41,10 +42,11 @@ export async function finingIn(actor: Actor, batchId: string, input: FiningForm,
   );
   await logDose(actor, run, two ? 'a' : 'only', { at, text: input.text, dose: input.dose, clientId: input.client_id }, transaction);
   if (intervalMin !== null) {
-    await Job.create(
+    const job = await Job.create(
       { cellarId: actor.cellarId, batchId, finingId: run.id, kind: 'fining_b', source: 'timer', dedupeKey: `fining_b:${run.id}`, title: `Second dose into ${batch.name}: ${fining.parts[1]}`, note: fining.caution, dueAt: new Date(at.getTime() + intervalMin * MINUTE_MS), exact: true, createdBy: actor.personId },
       { transaction },
     );
+    await ringForSecond(run, { title: job.title, note: job.note ?? null, dueAt: job.dueAt }, transaction);
   } else await waitToSettle(run, at, transaction);
   await auditBy(actor, 'fining.started', run.id, { batch: batchId, fining: fining.key }, transaction);
   await notifyChange({ cellar: actor.cellarId, kind: 'job', batch: batchId }, transaction);

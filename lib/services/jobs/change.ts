@@ -1,6 +1,6 @@
 import type { Transaction } from 'sequelize';
 import { inTransaction } from '@/db/client';
-import type { Job } from '@/db/models';
+import { FiningRun, type Job } from '@/db/models';
 import { authorize } from '@/lib/auth/authorize';
 import { may, type Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
@@ -8,6 +8,7 @@ import type { JobBody, UpdateJob } from '@/lib/contracts/jobs';
 import { ConflictError, ForbiddenError, InvalidError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { notifyChange } from '../changes';
+import { ringLater, silenceSecond } from '../finings/ring';
 import { jobBody, loadJob } from './load';
 
 /** Nobody puts a job off for longer. */
@@ -53,6 +54,8 @@ export async function dropJob(actor: Actor, id: string, clock: Clock = systemClo
   await change(actor, id, 'job.dropped', async (job, transaction) => {
     if (job.createdBy !== actor.personId && !may(actor.role, 'jobs.manage')) throw new ForbiddenError('You can take off only the jobs that you made.');
     await job.update({ droppedAt: new Date(clock.now()) }, { transaction });
+    const run = await runOf(job, transaction);
+    if (run) await silenceSecond(run, transaction);
     return { title: job.title };
   });
 }
@@ -65,9 +68,14 @@ export async function snoozeJob(actor: Actor, id: string, until: string, clock: 
   return change(actor, id, 'job.snoozed', async (job, transaction) => {
     if (job.kind === 'fining_b' && to.getTime() > job.dueAt.getTime() + LONGEST_FINING_WAIT_MS) throw new InvalidError('The second dose cannot wait that long.', { until: ['must be within a day of when it was due'] });
     await job.update({ snoozedUntil: to }, { transaction });
+    const run = await runOf(job, transaction);
+    if (run) await ringLater(run, to, transaction);
     return { until };
   });
 }
 
 /** The second dose of a fining works best in its time; a day late is late enough. */
 const LONGEST_FINING_WAIT_MS = 86_400_000;
+
+/** The fining whose second dose the job is about. */
+const runOf = (job: Job, transaction: Transaction): Promise<FiningRun | null> => (job.kind === 'fining_b' && job.finingId ? FiningRun.findByPk(job.finingId, { transaction }) : Promise.resolve(null));

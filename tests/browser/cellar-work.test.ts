@@ -1,0 +1,175 @@
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import type { Page } from 'playwright-core';
+import type { Actor } from '@/lib/auth/policies';
+import { createMust } from '@/lib/services/musts/create';
+import { aLine, aSheet, ciderAt } from '../support/cellar';
+import { expectNoSidewaysScroll, useBrowser } from '../support/browser';
+import { useDatabase } from '../support/database';
+import { buildMember } from '../support/factories';
+import { startWeb, type Web } from '../support/web';
+
+const db = useDatabase();
+const browser = useBrowser();
+
+let web: Web;
+let brewer: Actor;
+
+beforeAll(async () => {
+  web = await startWeb({ databaseUrl: db.url });
+  brewer = await buildMember('brewer');
+}, 600_000);
+
+afterAll(async () => {
+  await web.stop();
+});
+
+const visit = (options: { phone?: boolean } = {}) => browser.visitAs(brewer.personId, web.url, options);
+const open = (page: Page, path: string) => page.goto(`${web.url}${path}`);
+
+/** Sheets of paper that the page takes, A4 with the margins of a house printer. */
+async function pages(page: Page): Promise<number> {
+  const margin = '12mm';
+  const pdf = await page.pdf({ format: 'A4', margin: { top: margin, right: margin, bottom: margin, left: margin } });
+  return (pdf.toString('latin1').match(/\/Type\s*\/Page[^s]/g) ?? []).length;
+}
+
+describe('a must sheet', () => {
+  it('is written in words, loses nothing to a reload, and hands what was measured to the batch', async () => {
+    const { page, context, complaints } = await visit({ phone: true });
+    await open(page, '/musts/new');
+    await page.getByLabel('Name', { exact: true }).fill('Hedge honey cider');
+    await page.getByLabel('Yeast').selectOption({ label: 'cider yeast' });
+    await page.getByLabel('Vessel holds').fill('5');
+    for (const name of ['apple juice', 'honey']) {
+      await page.getByLabel('From the catalogue').selectOption({ label: name });
+      await page.getByRole('button', { name: 'Add the line' }).click();
+    }
+    await page.getByLabel('Amount of apple juice').fill('4 L');
+    await page.getByLabel('Amount of honey').fill('about half a jar');
+    // The unit follows what is written.
+    expect(await page.getByLabel('Unit of honey').inputValue()).toBe('each');
+    await page.getByLabel('Amount of apple juice').focus();
+    expect(await page.getByLabel('Amount of honey').inputValue()).toBe('about half');
+    // On a phone the promise stays in sight.
+    const glance = page.getByRole('link', { name: /^1\.0\d\d/ });
+    await glance.waitFor();
+    const promised = await glance.innerText();
+    await page.reload();
+    await page.getByText('It is not kept yet.').waitFor();
+    expect(await page.getByLabel('Amount of honey').inputValue()).toBe('about half');
+    expect(await page.getByRole('link', { name: /^1\.0\d\d/ }).innerText()).toBe(promised);
+    await expectNoSidewaysScroll(page);
+    await page.getByRole('button', { name: 'Keep the sheet' }).click();
+    await page.waitForURL(/musts\/[0-9a-f-]{36}$/);
+
+    await page.getByRole('button', { name: 'Measure and pitch' }).click();
+    const dialog = page.getByRole('dialog');
+    await dialog.getByLabel('Gravity as read').fill('1.062');
+    await dialog.getByLabel('Sample').fill('28');
+    // Warm must shows too little: the corrected gravity is higher.
+    await dialog.getByText('1.0643').waitFor();
+    await dialog.getByLabel('Must now').fill('45');
+    await dialog.getByText('the yeast dies').waitFor();
+    await dialog.getByLabel('Must now').fill('20');
+    await dialog.getByRole('link', { name: 'Start a batch with it' }).click();
+    await page.getByText('From its must sheet').waitFor();
+    expect(await page.getByLabel('Original gravity, at 20 °C').inputValue()).toBe('1.0643');
+    expect(complaints).toEqual([]);
+    await context.close();
+  });
+
+  it('of 25 lines is printed on one page', async () => {
+    const keys = ['apple-juice', 'honey', 'damson', 'table-sugar', 'raisins'];
+    const lines = Array.from({ length: 25 }, (_, index) => ({ ...aLine(keys[index % keys.length]!, 200 + index, 'g', { id: `line-${index}` }), note: index % 3 === 0 ? 'from the second picking, the soft ones taken out' : null }));
+    const must = await createMust(brewer, { sheet: aSheet({ name: 'All that the hedge gave this year, and the wall as well', lines: [aLine('water', 12, 'L'), ...lines.slice(1)], vessel_l: 25, method: 'Stone and crush the fruit. Water over it at 40 °C, stir, cover. Next day the enzyme, then the yeast.' }) });
+    const { page, context } = await visit();
+    await open(page, `/musts/${must.id}`);
+    await page.getByRole('button', { name: 'Print' }).waitFor();
+    expect(await pages(page)).toBe(1);
+    await context.close();
+  });
+});
+
+describe('what is done to a drink', () => {
+  it('is told before it is done, and the log agrees', async () => {
+    const batch = await ciderAt(brewer);
+    const { page, context, complaints } = await visit();
+    await open(page, `/batches/${batch.id}/work`);
+    const sugar = page.getByRole('region', { name: 'Sugar and honey' });
+    await sugar.getByRole('radio', { name: 'points' }).check();
+    await sugar.getByLabel('Should rise by').fill('10');
+    await sugar.getByText(/as if it had begun at 1\.0\d\d/).waitFor();
+    const [, asIf] = /begun at (1\.\d{3})/.exec(await sugar.innerText())!;
+    await sugar.getByRole('button', { name: 'Added' }).click();
+    await sugar.getByText('Logged:').waitFor();
+    await page.getByRole('definition').filter({ hasText: asIf! }).first().waitFor();
+
+    await page.getByText('Rack', { exact: true }).first().click();
+    await page.getByLabel('Left on the lees and in the hose').fill('0.3');
+    await page.getByLabel('What', { exact: true }).selectOption('water');
+    await page.getByLabel('How much').fill('0.4');
+    const comes = page.getByRole('region', { name: 'What it comes to' }).filter({ visible: true });
+    await comes.getByText('It fits').waitFor();
+    const [, gravity, strength] = /(1\.\d{3}), (\d+\.\d %)/.exec(await comes.innerText())!;
+    await page.getByRole('button', { name: 'Racked', exact: true }).click();
+    await page.getByText('Done and logged.').waitFor();
+    const said = await page.getByText(/became/).innerText();
+    expect(said).toContain(gravity);
+    expect(said).toContain(strength);
+    expect(complaints).toEqual([]);
+    await context.close();
+  });
+
+  it('splits into two vessels, is blended with another, and its family shows both', async () => {
+    const [long, sharp] = [await ciderAt(brewer, { volumeL: 10, vesselL: 11, batch: { name: 'Long hedge' } }), await ciderAt(brewer, { batch: { name: 'Sharp crab' } })];
+    const { page, context, complaints } = await visit();
+    await open(page, `/batches/${long.id}/work?do=split`);
+    await page.getByLabel('How much goes in').fill('4');
+    await page.getByLabel('It holds, brim full').fill('4.6');
+    await page.getByText('6 L stays in Long hedge.').waitFor();
+    await page.getByRole('button', { name: 'Split', exact: true }).last().click();
+    await page.getByText('Done and logged.').waitFor();
+
+    await open(page, `/batches/${long.id}/work?do=blend`);
+    await page.getByLabel('Batch', { exact: true }).nth(1).selectOption({ label: sharp.name });
+    await page.getByLabel('How much').nth(0).fill('3');
+    await page.getByLabel('How much').nth(1).fill('2');
+    await page.getByLabel('It holds, brim full').fill('5.5');
+    await page.getByRole('region', { name: 'What it comes to' }).waitFor();
+    await page.getByRole('button', { name: 'Blended', exact: true }).click();
+    await page.getByText('Done and logged.').waitFor();
+    await page.getByRole('link', { name: 'Long hedge, blended', exact: true }).click();
+    await page.waitForURL((url) => !url.pathname.includes(long.id));
+    await open(page, `${new URL(page.url()).pathname}/work?do=family`);
+    const from = page.getByRole('region', { name: 'Where it comes from' });
+    await from.getByText('3 L blended in').waitFor();
+    await from.getByText('2 L blended in').waitFor();
+    await page.getByText('60 % Long hedge, 40 % Sharp crab').waitFor();
+    expect(complaints).toEqual([]);
+    await context.close();
+  });
+});
+
+describe('the rounds', () => {
+  it('go into a calendar by a private address, until it is ended', async () => {
+    const { page, context } = await visit({ phone: true });
+    await open(page, '/rounds');
+    await page.getByRole('button', { name: 'Add a job' }).click();
+    await page.getByLabel('What is to be done').fill('Wash twelve half-litre bottles; count them, too');
+    await page.getByRole('button', { name: 'Put it down' }).click();
+    await page.getByText('Wash twelve half-litre bottles').first().waitFor();
+    await page.getByRole('button', { name: 'Calendar' }).click();
+    await page.getByRole('button', { name: 'Make an address' }).click();
+    const address = await page.getByLabel('Address to subscribe to').inputValue();
+    const answer = await fetch(address);
+    expect(answer.headers.get('content-type')).toContain('text/calendar');
+    const text = await answer.text();
+    // RFC 5545: lines of at most 75 octets, folded; text escaped.
+    for (const line of text.split('\r\n')) expect(Buffer.byteLength(line)).toBeLessThanOrEqual(75);
+    expect(text.replaceAll('\r\n ', '')).toContain('SUMMARY:Wash twelve half-litre bottles\\; count them\\, too');
+    await page.getByRole('button', { name: 'End this address' }).click();
+    await page.getByRole('button', { name: 'Make an address' }).waitFor();
+    expect((await fetch(address)).status).toBe(404);
+    await context.close();
+  });
+});
