@@ -119,8 +119,9 @@ export class OutsideBroker implements Subscription {
       client.on('connect', () => {
         if (index === 0 && connection > 0) this.options.onBack?.();
         this.ask(client, index).then(resolve, (error: unknown) => {
-          log.error({ err: error, index }, 'the outside broker refused the subscription');
-          client.reconnect();
+          log.error({ err: error, index }, 'the outside broker refused the subscription; asked again');
+          // It may be allowed by and by; until then it is not to be stormed.
+          void pause(RETRY_MS).then(() => this.stopped || client.reconnect());
         });
       });
     });
