@@ -25,6 +25,11 @@ const REFUSED: Record<string, string> = {
   'two hundred and one columns': `${Array.from({ length: 201 }, (_, index) => `c${index}`).join(',')}\n1\n`,
   'a cell of a megabyte': `${HEAD}${'x'.repeat(1_000_000)},1.05,18\n`,
   'more rows than anybody logs': `${HEAD}${GOOD.repeat(100_001)}`,
+  'a million lines': `${HEAD}${'1,2,3\n'.repeat(1_000_000)}`,
+  'nothing but delimiters': ';'.repeat(100_000),
+  'a spreadsheet, which is a zip': `PK\u0003\u0004\u0014\u0000\u0006\u0000${'\ufffd'.repeat(500)}`,
+  'a database': 'SQLite format 3\u0000\u0010\u0000\u0001\u0001\u0000@  \n',
+  'a picture': '\ufffdPNG\r\n\u001a\n\u0000\u0000\u0000\rIHDR\n',
 };
 
 /** Files in which every line is wrong: each line named, nothing kept. */
@@ -32,6 +37,9 @@ const ALL_LINES_WRONG: Record<string, string> = {
   JSON: '{\n"gravity": 1.05,\n"at": "2026-03-01"\n}\n',
   HTML: '<!doctype html>\n<html>\n<script>alert(1)</script>\n</html>\n',
   'a gzip read as text': `head\n${gzipSync('x'.repeat(100)).toString('latin1').replaceAll('"', '').replaceAll('\u0000', '')}\n`,
+  'a PDF': '%PDF-1.7\n1 0 obj\n<</Type/Catalog>>\nendobj\n',
+  'a page that is a table too': '<!--time,gravity\n2026-03-01T00:00:00Z<b>,1.050</b>\n-->\n',
+  'a log cut by bars': 'time|gravity|temperature\n2026-03-01T00:00:00Z|1.050|18\n',
   'a log cut by spaces': 'time gravity temperature\n2026-03-01 1.050 18\n',
   'words for gravities': `${HEAD}2026-03-01T00:00:00Z,one point oh five,18\n`,
   'no such days': `${HEAD}2026-02-30T00:00:00,1.05,18\n2026-13-01,1.05,18\n`,
