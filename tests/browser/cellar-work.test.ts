@@ -81,7 +81,7 @@ describe('a must sheet', () => {
   it('of 25 lines is printed on one page', async () => {
     const keys = ['apple-juice', 'honey', 'damson', 'table-sugar', 'raisins'];
     const lines = Array.from({ length: 25 }, (_, index) => ({ ...aLine(keys[index % keys.length]!, 200 + index, 'g', { id: `line-${index}` }), note: index % 3 === 0 ? 'from the second picking, the soft ones taken out' : null }));
-    const must = await createMust(brewer, { sheet: aSheet({ name: 'All that the hedge gave this year, and the wall as well', lines: [aLine('water', 12, 'L'), ...lines.slice(1)], vessel_l: 25, method: 'Stone and crush the fruit. Water over it at 40 °C, stir, cover. Next day the enzyme, then the yeast.' }) });
+    const must = await createMust(brewer, aSheet({ name: 'All that the hedge gave this year, and the wall as well', lines: [aLine('water', 12, 'L'), ...lines.slice(1)], vessel_l: 25, method: 'Stone and crush the fruit. Water over it at 40 °C, stir, cover. Next day the enzyme, then the yeast.' }));
     const { page, context } = await visit();
     await open(page, `/musts/${must.id}`);
     await page.getByRole('button', { name: 'Print' }).waitFor();

@@ -141,6 +141,9 @@ describe('a must sheet', () => {
     await archiveMust(brewer, must.id, clock);
     expect((await listMusts(brewer, list)).items).toEqual([]);
     expect((await listMusts(brewer, { ...list, archived: 'yes' })).items).toHaveLength(1);
+    // Who writes on it wants it back.
+    await updateMust(brewer, must.id, { sheet: aSheet({ name: 'Orchard cider, once more' }), base_version: 1, change_note: null }, clock);
+    expect((await listMusts(brewer, list)).items).toMatchObject([{ id: must.id, version: 2, archived: false }]);
   });
 });
 
