@@ -1,4 +1,4 @@
-import { createCipheriv, createDecipheriv, createHmac, hkdfSync, randomBytes, randomInt, timingSafeEqual } from 'node:crypto';
+import { createCipheriv, createDecipheriv, createHmac, hkdfSync, randomBytes, randomInt } from 'node:crypto';
 import { Secret, TOTP } from 'otpauth';
 import { authSecret } from '../config/env';
 
@@ -56,5 +56,3 @@ export const recoveryCodeWords = (code: string) => `${code.slice(0, 5)}-${code.s
 
 /** Keyed with the server's secret: short codes cannot be guessed from a copy of the database. */
 export const hashRecoveryCode = (code: string): Buffer => createHmac('sha256', keyFor('recovery')).update(code).digest();
-
-export const sameHash = (a: Buffer, b: Buffer): boolean => a.length === b.length && timingSafeEqual(a, b);

@@ -26,7 +26,6 @@ export const bottleForm = z.object({
   /** Sugar drops in each, where drops are used. */
   drops: z.number().int().min(0).max(40).default(0),
 });
-export type BottleForm = z.infer<typeof bottleForm>;
 
 export const primingForm = z.discriminatedUnion('way', [
   z.object({ way: z.literal('none') }),

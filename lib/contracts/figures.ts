@@ -3,7 +3,6 @@ import { HOW_STATUSES } from '../core/how/how';
 
 /** An amount known only within limits: the least, the likely and the most. */
 export const rangeSchema = z.object({ lo: z.number(), value: z.number(), hi: z.number() });
-export type RangeBody = z.infer<typeof rangeSchema>;
 
 /** A range that somebody typed in. */
 export const rangeWithin = (min: number, max: number) => {
@@ -34,5 +33,3 @@ export const strengthSchema = z.object({
   difference: z.number(),
   why: z.string(),
 });
-
-export const withSource = { source: z.string(), status: z.enum(HOW_STATUSES) };

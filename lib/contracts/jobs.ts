@@ -3,7 +3,6 @@ import { id, line, text, timestamp } from './common';
 
 /** What a job is about; `other` is whatever somebody wrote down. */
 export const JOB_KINDS = ['reading', 'start', 'neck', 'stalled', 'temperature', 'sensor', 'rack', 'bottle', 'airlock', 'feed', 'fining_b', 'settle', 'condition', 'test_bottle', 'pressure', 'other'] as const;
-export type JobKind = (typeof JOB_KINDS)[number];
 
 /** A call of the program, a time from the last log entry, a clock that was started, or a person. */
 export const JOB_SOURCES = ['call', 'schedule', 'timer', 'person'] as const;

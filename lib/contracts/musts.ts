@@ -66,7 +66,6 @@ export const mustOutcomeSchema = z.object({
   cost: rangeFigure.extend({ known: z.boolean() }),
   notes: z.array(z.object({ kind: z.enum(['preservative', 'sulphite', 'allergen', 'dose', 'caution', 'volume', 'tolerance', 'release', 'diastatic']), line: z.string().nullable(), sentence: z.string() })),
 });
-export type MustOutcomeBody = z.infer<typeof mustOutcomeSchema>;
 
 export const mustResultSchema = z.discriminatedUnion('ok', [
   z.object({ ok: z.literal(true), outcome: mustOutcomeSchema }),

@@ -56,7 +56,6 @@ export const sensorList = z.object({ items: z.array(sensorSchema), next_cursor: 
 
 export const refusedSchema = z.object({ id: z.string(), received_at: z.string(), road: z.enum(['mqtt', 'http']), reason: z.string(), body: z.string() });
 export const refusedList = z.object({ items: z.array(refusedSchema) });
-export type RefusedBody = z.infer<typeof refusedSchema>;
 
 export const sensorSettingsForm = z.object({ interval_s: createSensor.shape.interval_s.unwrap() });
 
@@ -76,7 +75,6 @@ export const rawReadingSchema = z.object({
   foam: z.number().nullable(),
   sequence: z.number().nullable(),
 });
-export type RawReadingBody = z.infer<typeof rawReadingSchema>;
 export const rawReadingList = z.object({ items: z.array(rawReadingSchema) });
 export const rawReadingQuery = z.object({ limit: z.coerce.number().int().min(1).max(500).default(20) });
 
