@@ -24,7 +24,7 @@ function Facts({ facts, phone }: { facts: readonly Fact[]; phone: boolean }) {
   const order = phone ? ['now', 'last known', 'attenuation', 'strength so far', 'original gravity', 'room', 'foam'] : shown.map((fact) => fact.name);
   const ordered = order.flatMap((name) => shown.find((fact) => fact.name === name) ?? []);
   return (
-    <dl className={phone ? 'grid grid-cols-4 border-b' : 'mt-[14px] grid grid-cols-4 border-t wide:flex wide:flex-wrap'}>
+    <dl className={phone ? 'grid grid-cols-4 border-b' : 'mt-[14px] grid grid-cols-4 border-t wide:flex'}>
       {ordered.map((fact, index) => (
         <div key={fact.name} className={phone ? `border-rule py-2 ${index > 3 ? 'border-t' : ''} ${index % 4 === 0 ? 'pl-(--margin)' : 'border-l pl-2'}` : `flex-auto py-2 pr-3 ${index === 0 ? '' : index % 4 === 0 ? 'wide:border-l wide:pl-3' : 'border-l pl-3'}`}>
           <dt className="type-label truncate text-[0.71875rem] text-ink2">{names[fact.name] ?? fact.name}</dt>
@@ -38,8 +38,28 @@ function Facts({ facts, phone }: { facts: readonly Fact[]; phone: boolean }) {
   );
 }
 
+/** What stands around the vessel, in one line below the drink's own figures. */
+const AROUND: ReadonlySet<string> = new Set(['room', 'foam']);
+
+function Around({ facts }: { facts: readonly Fact[] }) {
+  return (
+    <dl className="flex flex-wrap gap-x-8 gap-y-1 border-t border-rule pt-2">
+      {facts.map((fact) => (
+        <div key={fact.name} className="type-label flex items-baseline gap-[1ch]">
+          <dt className="text-ink2">{fact.name}</dt>
+          <dd>
+            <span className="font-mono text-[0.875rem] font-semibold">{fact.figure}</span>
+            {fact.more && <span className="pl-1.5 text-ink2">{fact.more}</span>}
+          </dd>
+        </div>
+      ))}
+    </dl>
+  );
+}
+
 /** The batch's name, its vessel, what can be done, and one ruled line of facts. */
 export function BatchHead({ batch, vessel, facts, actions }: { batch: BatchBody; vessel: VesselState; facts: readonly Fact[]; actions: HeadActions }) {
+  const around = facts.filter((fact) => AROUND.has(fact.name));
   return (
     <header className="hidden border-b pl-3 pr-(--margin) strip:flex">
       <div className="w-[142px] shrink-0 py-3">
@@ -66,7 +86,8 @@ export function BatchHead({ batch, vessel, facts, actions }: { batch: BatchBody;
             )}
           </div>
         </div>
-        <Facts facts={facts} phone={false} />
+        <Facts facts={facts.filter((fact) => !AROUND.has(fact.name))} phone={false} />
+        {around.length > 0 && <Around facts={around} />}
       </div>
     </header>
   );

@@ -51,7 +51,9 @@ function Verdict({ outcome }: { outcome: FitOutcome }) {
 }
 
 function Bench({ sensor, calibration, mayChange, timeZone, now }: { sensor: SensorBody; calibration: CalibrationBody; mayChange: boolean; timeZone: string; now: number }) {
-  const [degree, setDegree] = useState<Degree>(calibration.points.length >= 4 ? 2 : 1);
+  const [chosen, setDegree] = useState<Degree | null>(null);
+  // Four points show a bend; fewer only where the line goes.
+  const degree = chosen ?? (calibration.points.length >= 4 ? 2 : 1);
   const [corrects, setCorrects] = useState(true);
   const [left, setLeft] = useState<ReadonlySet<string>>(new Set());
   const { failed, run } = useWork();

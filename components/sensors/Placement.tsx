@@ -32,6 +32,9 @@ export function useSensorChange(id: string) {
   return { busy, failed, change };
 }
 
+/** `one`, `one and two`, `one, two and three`. */
+const listed = (names: readonly string[]) => (names.length < 2 ? names.join('') : `${names.slice(0, -1).join(', ')} and ${names.at(-1)}`);
+
 /** The room that a room probe hangs in, by the name that batches give their place. */
 export function Hanging({ sensor, mayAssign }: { sensor: SensorBody; mayAssign: boolean }) {
   const { batches } = useBatches({ state: 'working' });
@@ -43,20 +46,24 @@ export function Hanging({ sensor, mayAssign }: { sensor: SensorBody; mayAssign: 
   return (
     <section aria-label="In which place" className="flex flex-col gap-3 border-b px-(--margin) py-4">
       <p className="type-body">
-        {sensor.place === null
-          ? 'It hangs in no place. Name one, and the batches standing there show its temperature.'
-          : `It hangs in ${sensor.place}. ${sharing.length === 0 ? 'No batch stands there now.' : `${sharing.map((batch) => batch.name).join(', ')} ${sharing.length === 1 ? 'stands' : 'stand'} there and ${sharing.length === 1 ? 'shows' : 'show'} its temperature.`}`}
+        {sensor.place === null ? (
+          'It hangs in no place. Name one, and the batches standing there show its temperature.'
+        ) : (
+          <>
+            Its place: <b className="font-semibold">{sensor.place}</b>. {sharing.length === 0 ? 'No batch stands there now.' : `${listed(sharing.map((batch) => batch.name))} ${sharing.length === 1 ? 'stands there and shows' : 'stand there and show'} its temperature.`}
+          </>
+        )}
       </p>
       {failed && <FormError>{failed}</FormError>}
       {mayAssign && (
-        <form className="flex flex-wrap items-end gap-2" onSubmit={(event) => (event.preventDefault(), void change({ place: place.trim() || null }))}>
-          <Field label="it hangs in" list={list} maxLength={80} autoComplete="off" value={place} onChange={(event) => setPlace(event.target.value)} className="min-w-48 flex-1" hint="a place as the batches name it; empty: none" />
+        <form className="flex flex-wrap items-start gap-2" onSubmit={(event) => (event.preventDefault(), void change({ place: place.trim() || null }))}>
+          <Field label="it hangs" list={list} maxLength={80} autoComplete="off" value={place} onChange={(event) => setPlace(event.target.value)} className="min-w-48 flex-1" hint="As the batches name it. Empty: none." />
           <datalist id={list}>
             {places.map((name) => (
               <option key={name} value={name} />
             ))}
           </datalist>
-          <Button type="submit" disabled={busy || place.trim() === (sensor.place ?? '')} className="mb-[22px]">
+          <Button type="submit" disabled={busy || place.trim() === (sensor.place ?? '')} className="mt-[22px]">
             Keep it so
           </Button>
         </form>
@@ -91,7 +98,7 @@ export function Placement({ sensor, mayAssign, timeZone, now }: { sensor: Sensor
             <span className="fig">since {dayName(Date.parse(sensor.batch.since) / 1000, timeZone)}</span>. What it sends counts for this batch.
           </>
         ) : (
-          'In no vessel. What it sends is kept and counts for no batch.'
+          sensor.kind === 'room' && sensor.place !== null ? 'At no vessel of its own: it tells of the room.' : 'In no vessel. What it sends is kept and counts for no batch.'
         )}
       </p>
       {failed && <FormError>{failed}</FormError>}

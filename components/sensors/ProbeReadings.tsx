@@ -34,28 +34,30 @@ export function ProbeReadings({ sensor, now, timeZone }: { sensor: SensorBody; n
   return (
     <section aria-label={foam ? 'Foam' : 'Temperature'}>
       <GroupBar word={foam ? 'Foam above the drink' : 'Temperature of the room'} note={last ? `${last.value.toFixed(foam ? 0 : 1)} ${unit} at ${when(last.at, now, timeZone)}` : undefined} />
-      <div ref={frame} className="border-b px-(--margin) py-3">
-        {loading && <Haze height={HEIGHT} label="Loading what it said" />}
-        {!loading && said.length === 0 && <p className="type-body text-ink2">Nothing heard yet.</p>}
-        {first && last && (
-          <svg width={width} height={HEIGHT} role="img" aria-label={`From ${first.value.toFixed(1)} to ${last.value.toFixed(1)} ${unit} in ${said.length} readings`} className="block font-mono" fontSize="12" fontWeight="500">
-            {y.ticks.map((tick) => (
-              <g key={tick}>
-                <path d={`M${LEFT} ${up(tick)}H${width - RIGHT}`} stroke="var(--rule)" />
-                <text x={LEFT - 8} y={up(tick) + 4} textAnchor="end" fill="var(--ink2)">
-                  {Number(tick.toFixed(2))} {unit}
-                </text>
-              </g>
-            ))}
-            <path d={said.map((point, index) => `${index === 0 ? 'M' : 'L'}${x(point.at).toFixed(1)} ${up(point.value).toFixed(1)}`).join('')} fill="none" stroke={foam ? 'var(--ink)' : 'var(--mercury)'} strokeWidth="1.8" />
-            <text x={LEFT} y={HEIGHT - 6} fill="var(--ink2)">
-              {when(first.at, now, timeZone)}
-            </text>
-            <text x={width - RIGHT} y={HEIGHT - 6} textAnchor="end" fill="var(--ink2)">
-              {when(last.at, now, timeZone)}
-            </text>
-          </svg>
-        )}
+      <div className="border-b px-(--margin) py-3">
+        <div ref={frame} className="min-w-0">
+          {loading && <Haze height={HEIGHT} label="Loading what it said" />}
+          {!loading && said.length === 0 && <p className="type-body text-ink2">Nothing heard yet.</p>}
+          {first && last && (
+            <svg width={width} height={HEIGHT} role="img" aria-label={`From ${first.value.toFixed(1)} to ${last.value.toFixed(1)} ${unit} in ${said.length} readings`} className="block font-mono" fontSize="12" fontWeight="500">
+              {y.ticks.map((tick) => (
+                <g key={tick}>
+                  <path d={`M${LEFT} ${up(tick)}H${width - RIGHT}`} stroke="var(--rule)" />
+                  <text x={LEFT - 8} y={up(tick) + 4} textAnchor="end" fill="var(--ink2)">
+                    {Number(tick.toFixed(2))} {unit}
+                  </text>
+                </g>
+              ))}
+              <path d={said.map((point, index) => `${index === 0 ? 'M' : 'L'}${x(point.at).toFixed(1)} ${up(point.value).toFixed(1)}`).join('')} fill="none" stroke={foam ? 'var(--ink)' : 'var(--mercury)'} strokeWidth="1.8" />
+              <text x={LEFT} y={HEIGHT - 6} fill="var(--ink2)">
+                {when(first.at, now, timeZone)}
+              </text>
+              <text x={width - RIGHT} y={HEIGHT - 6} textAnchor="end" fill="var(--ink2)">
+                {when(last.at, now, timeZone)}
+              </text>
+            </svg>
+          )}
+        </div>
       </div>
     </section>
   );
