@@ -33,7 +33,9 @@ export interface Finding {
 const CONFIRM_WITHIN_INTERVALS = 3;
 const LEAST_SILENCE_S = 6 * 3_600;
 
-const spanWords = (seconds: number) => (seconds < 120 ? `${Math.round(seconds)} s` : seconds < 7_200 ? `${Math.round(seconds / 60)} min` : seconds < 172_800 ? `${Math.round(seconds / 3_600)} h` : `${Math.round(seconds / 86_400)} days`);
+const spanWords = (seconds: number) => (seconds < 120 ? `${Math.round(seconds)} s` : seconds < 7_200 ? `${Math.round(seconds / 60)} min` : seconds < 172_800 ? `${Math.round(seconds / 3_600)} h` : days(Math.round(seconds / 86_400)));
+
+const days = (count: number) => `${count} ${count === 1 ? 'day' : 'days'}`;
 
 /** What is not as it should be with a sensor, most pressing first; each with what to do. */
 export function judgeHealth(figures: HealthFigures, limits: HealthLimits): Finding[] {
@@ -45,7 +47,7 @@ export function judgeHealth(figures: HealthFigures, limits: HealthLimits): Findi
   // The low end: a lithium cell drops at the end faster than any line.
   const daysLeft = battery?.lo ?? battery?.days ?? null;
   if (battery && daysLeft !== null && daysLeft <= limits.lowBatteryDays) {
-    findings.push({ of: 'battery', says: daysLeft < 1 ? 'Cell is flat.' : `Cell may be flat in ${Math.floor(daysLeft)} days.`, act: 'Charge it or change it at the next racking.' });
+    findings.push({ of: 'battery', says: daysLeft < 1 ? 'Cell is flat.' : `Cell may be flat in ${days(Math.floor(daysLeft))}.`, act: 'Charge it or change it at the next racking.' });
   }
   if (refused24h > 0) findings.push({ of: 'refused', says: `${refused24h} refused in 24 h.`, act: 'Their reasons stand below; set the sensor right by them.' });
   const all = gaps ? gaps.heard + gaps.missed : 0;
@@ -59,6 +61,6 @@ export function judgeHealth(figures: HealthFigures, limits: HealthLimits): Findi
   if (settings && !settings.confirmed && settings.sentAgoS > CONFIRM_WITHIN_INTERVALS * intervalS) {
     findings.push({ of: 'settings', says: `Settings sent ${spanWords(settings.sentAgoS)} ago, not confirmed.`, act: 'It may not listen: set its interval by hand.' });
   }
-  if (waiting > 0) findings.push({ of: 'calibration', says: `${waiting} readings wait for a calibration.`, act: 'Calibrate it: they turn into gravity then, back to the day you choose.' });
+  if (waiting > 0) findings.push({ of: 'calibration', says: `${waiting} ${waiting === 1 ? 'reading waits' : 'readings wait'} for a calibration.`, act: 'Calibrate it: they turn into gravity then, back to the day you choose.' });
   return findings;
 }
