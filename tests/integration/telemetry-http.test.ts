@@ -4,6 +4,7 @@ import { POST } from '@/app/api/v1/telemetry/route';
 import { Sensor } from '@/db/models';
 import { problem } from '@/lib/contracts/common';
 import { telemetryResult } from '@/lib/contracts/telemetry';
+import { metrics } from '@/lib/http/metrics';
 import { useDatabase } from '../support/database';
 import { buildSensor } from '../support/factories';
 
@@ -30,6 +31,14 @@ describe('POST /api/v1/telemetry', () => {
     expect(response.status).toBe(202);
     expect(telemetryResult.parse(await response.json())).toEqual({ stored: 1, duplicates: 1, refused: [{ index: 2, reason: 'temperature must be between -10 and 60 °C' }] });
     expect([await count('readings', sensor), await count('refusals', sensor)]).toEqual([1, 1]);
+  });
+
+  it('counts among the requests of the house, whatever came of it', async () => {
+    const counted = async (status: number) => (await metrics().requests.get()).values.find(({ metricName, labels }) => metricName?.endsWith('_count') && labels.route === '/telemetry' && labels.status === status)?.value ?? 0;
+    const [good202, bad401] = [await counted(202), await counted(401)];
+    await send(JSON.stringify(good), (await sensorWithHeader()).headers);
+    await send(JSON.stringify(good));
+    expect([await counted(202), await counted(401)]).toEqual([good202 + 1, bad401 + 1]);
   });
 
   it('takes SenML by its content type', async () => {

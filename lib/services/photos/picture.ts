@@ -1,6 +1,7 @@
 import { fileTypeFromBuffer } from 'file-type';
 import sharp from 'sharp';
-import { InvalidError, UnavailableError } from '@/lib/errors';
+import { InvalidError } from '@/lib/errors';
+import { turns } from '@/lib/turns';
 import { isPlainJpeg } from './plain-jpeg';
 
 /** Forms that are taken, by their content and not by what they are called. */
@@ -12,8 +13,7 @@ const LARGE = { width: 2_048, height: 2_048 };
 const SMALL = { width: 528, height: 336 };
 const SECONDS = 15;
 /** Pictures unfold in memory: so many at a time, and so many waiting. */
-const AT_ONCE = 2;
-const WAITING = 8;
+const inTurn = turns({ atOnce: 2, waiting: 8, says: 'Too many photos come in at once. Send it again in a moment.' });
 
 export interface Picture {
   large: Buffer;
@@ -21,23 +21,6 @@ export interface Picture {
   /** Of the large one, px. */
   width: number;
   height: number;
-}
-
-let working = 0;
-const waiting: (() => void)[] = [];
-
-async function inTurn<T>(work: () => Promise<T>): Promise<T> {
-  if (working >= AT_ONCE) {
-    if (waiting.length >= WAITING) throw new UnavailableError('Too many photos come in at once. Send it again in a moment.');
-    await new Promise<void>((resolve) => waiting.push(resolve));
-  }
-  working += 1;
-  try {
-    return await work();
-  } finally {
-    working -= 1;
-    waiting.shift()?.();
-  }
 }
 
 const refuse = (says: string) => new InvalidError('This is no photo that can be kept.', { photo: [says] });

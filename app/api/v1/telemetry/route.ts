@@ -2,6 +2,7 @@ import { sensorOfBearer } from '@/lib/auth/sensor-bearer';
 import { endpoints } from '@/lib/contracts/endpoints';
 import { addressOf } from '@/lib/http/address';
 import { readBytes } from '@/lib/http/body';
+import { metrics } from '@/lib/http/metrics';
 import { problemOf } from '@/lib/http/problem';
 import { inTime } from '@/lib/http/route';
 import type { BodyForm } from '@/lib/services/readings/parse';
@@ -13,11 +14,10 @@ const { path, method, status } = endpoints.postTelemetry;
 
 /** The same body as over MQTT, for sensors that speak HTTP only; they sign each message with their own secret. */
 export async function POST(request: Request): Promise<Response> {
-  try {
-    return await inTime(answer(request));
-  } catch (error) {
-    return problemOf(error, { method, path });
-  }
+  const done = metrics().requests.startTimer({ method, route: path });
+  const response = await inTime(answer(request)).catch((error: unknown) => problemOf(error, { method, path }));
+  done({ status: response.status });
+  return response;
 }
 
 async function answer(request: Request): Promise<Response> {
