@@ -16,9 +16,9 @@ export function daysWords(days: { value: number; lo: number | null; hi: number |
   const value = Math.round(days.value);
   if (value < 1) return 'flat';
   const [lo, hi] = [days.lo === null ? null : Math.floor(days.lo), days.hi === null ? null : Math.ceil(days.hi)];
-  const days = value === 1 ? 'day' : 'days';
-  if (lo === null || lo === value) return `about ${value} ${days}`;
-  return hi === null ? `about ${value} ${days}, ${lo} at least` : `about ${value} ${days}, ${lo}–${hi}`;
+  const named = value === 1 ? 'day' : 'days';
+  if (lo === null || lo === value) return `about ${value} ${named}`;
+  return hi === null ? `about ${value} ${named}, ${lo} at least` : `about ${value} ${named}, ${lo}–${hi}`;
 }
 
 function clockWords(offset: number | null): string {
