@@ -2,7 +2,7 @@ import 'server-only';
 import { authSecret, env } from '../config/env';
 import { logFor } from '../log';
 import { eventHub } from './event-hub';
-import { refuseTrace } from './trace';
+import { refuseUnreadable } from './refuse';
 
 /**
  * What the web server needs before its first request. next-auth reads its own
@@ -10,7 +10,7 @@ import { refuseTrace } from './trace';
  */
 export function startServer(): void {
   shareWithNextAuth();
-  refuseTrace();
+  refuseUnreadable();
   eventHub().begin();
   // An open event stream would keep the server alive after it was told to stop.
   for (const signal of ['SIGTERM', 'SIGINT'] as const) process.once(signal, () => void eventHub().stop());

@@ -1,7 +1,7 @@
 import { createServer, Server } from 'node:http';
 import type { AddressInfo } from 'node:net';
 import { afterEach, expect, it } from 'vitest';
-import { refuseTrace } from '@/lib/http/trace';
+import { refuseUnreadable } from '@/lib/http/refuse';
 import { sendRaw } from '../../support/hostile/wire';
 
 const { emit } = Server.prototype;
@@ -9,7 +9,7 @@ afterEach(() => {
   Server.prototype.emit = emit;
 });
 
-it('TRACE is refused before anybody reads it, and all else is heard as ever', async () => {
+it('TRACE and addresses that cannot be decoded are refused before anybody reads them, and all else is heard as ever', async () => {
   const heard: string[] = [];
   const server = createServer((request, response) => {
     heard.push(request.method ?? '');
@@ -17,8 +17,9 @@ it('TRACE is refused before anybody reads it, and all else is heard as ever', as
   });
   await new Promise<void>((resolve) => server.listen(0, '127.0.0.1', resolve));
   const { port } = server.address() as AddressInfo;
-  refuseTrace();
+  refuseUnreadable();
   for (const method of ['TRACE', 'GET', 'OPTIONS', 'TRACE', 'DELETE']) expect(await sendRaw(port, `${method} / HTTP/1.1\r\nHost: x\r\nConnection: close\r\n\r\n`), method).toBe(method === 'TRACE' ? 405 : 204);
   expect(heard).toEqual(['GET', 'OPTIONS', 'DELETE']);
+  for (const [path, status] of [['/%ff%fe%', 400], ['/%', 400], ['/a%zz', 400], ['/%c0%80', 400], ['/%e2%82%ac', 204], ['/a?b=%ff%', 204], ['/%00', 204], ['/%2e%2e/%25', 204]] as const) expect(await sendRaw(port, `GET ${path} HTTP/1.1\r\nHost: x\r\nConnection: close\r\n\r\n`), path).toBe(status);
   await new Promise((resolve) => server.close(resolve));
 });
