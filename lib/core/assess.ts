@@ -61,17 +61,9 @@ function stageOf(watch: Watch): Stage {
   const fit = watch.fit();
   if (fit) {
     const tau = watch.track.tauAt(watch.lookedAt) - watch.track.tauAt(watch.segment.from);
-    return fit.curve.rate(tau) >= 0.8 * peakRate(fit.curve, tau) ? 'peak' : 'accelerating';
+    return fit.curve.rate(tau) >= 0.8 * fit.curve.rate(fit.curve.peakTau(tau)) ? 'peak' : 'accelerating';
   }
   return 'accelerating';
-}
-
-/** Highest rate that the curve reaches at any time, points a thermal day. */
-function peakRate(curve: { rate(tau: number): number; m: number }, tau: number): number {
-  let most = 0;
-  const until = Math.max(tau, 3 * curve.m + 1);
-  for (let i = 0; i <= 24; i += 1) most = Math.max(most, curve.rate((i / 24) * until));
-  return most;
 }
 
 const MS_PER_H = 3_600_000;

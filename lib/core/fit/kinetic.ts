@@ -15,6 +15,8 @@
  * day: unlike k it hardly hangs together with Kr.
  */
 export const KINETIC_PARAMETERS = 6;
+/** Steps in which the steepest place is sought. */
+const PEAK_STEPS = 60;
 
 const softplus = (z: number): number => (z > 30 ? z : Math.log1p(Math.exp(z)));
 const logistic = (z: number): number => 1 / (1 + Math.exp(-z));
@@ -83,6 +85,22 @@ export class KineticCurve {
     const s = this.share(tau);
     const a = logistic((tau - this.m) / this.w);
     return ((this.og - this.fg) * this.k * a * s * (1 - this.delta * (1 - s))) / (this.kr + s);
+  }
+
+  /** τ at which the fall is steepest, days; to about a sixtieth of the span up to `tau` or well past the onset. */
+  peakTau(tau: number): number {
+    const until = Math.max(tau, 3 * this.m + 1);
+    let at = 0;
+    let most = 0;
+    for (let i = 1; i <= PEAK_STEPS; i += 1) {
+      const here = (i / PEAK_STEPS) * until;
+      const rate = this.rate(here);
+      if (rate > most) {
+        most = rate;
+        at = here;
+      }
+    }
+    return at;
   }
 
   /** τ at which the share still to come has fallen to `s`; Infinity for 0. */

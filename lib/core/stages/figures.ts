@@ -21,6 +21,9 @@ const NEAR_END = 0.8;
 const TAIL_SPEAKS_FROM = 0.6;
 const TAIL_TAKES_OVER = 0.3;
 
+/** Share of the fall, by the curve, from which the tail tells of the final gravity (own simulations). */
+const TAIL_SHOWS_END_FROM = 0.8;
+
 interface TailCache {
   at: number;
   tail: Tail | null;
@@ -287,11 +290,17 @@ export class Figures {
     return remaining(both.value, both.sd);
   }
 
-  /** Expected final gravity, points. */
+  /** Expected final gravity, points: by the curve, and the further the fall is by it, the more by the tail. */
   expectedFg(): number | null {
     const left = this.remainingNow();
     const level = this.levelNow();
-    return left === null || level === null ? null : level - left.value;
+    if (left === null || level === null) return null;
+    const fit = this.fit();
+    if (!fit) return level - left.value;
+    const { og, fg } = fit.curve;
+    const done = og > fg ? (og - level) / (og - fg) : 1;
+    const share = Math.min(1, Math.max(0, (done - TAIL_SHOWS_END_FROM) / (1 - TAIL_SHOWS_END_FROM)));
+    return share * (level - left.value) + (1 - share) * fg;
   }
 
   /** Hours until the gravity is within a point of its end; null without a curve or a tail. */

@@ -14,7 +14,6 @@ const FRUIT_SUGAR = 0.1;
 export class Intake extends Figures {
   /** Highest rate over each window that the peak is sought in. */
   protected readonly maxRates = new Map<number, { rate: number; se: number }>();
-  protected maxFittedRate = 0;
   private noiseHistory: number[] = [];
   private usualNoise: number | null = null;
   private frozenLooks = 0;
@@ -120,7 +119,6 @@ export class Intake extends Figures {
     this.lowest = null;
     this.maxRate = 0;
     this.maxRates.clear();
-    this.maxFittedRate = 0;
     this.pendingLevels = true;
     this.sweetened = sweetened;
     this.recordChanged();

@@ -17,6 +17,12 @@ export const OVERDUE_H: Record<BatchSetup['kind'], number> = { beer: 48, cider: 
 const REST_LOOK_H = 12;
 const REST_POINTS = 0.8;
 
+/** Thermal days past the steepest place of the curve at which the peak is over by the curve alone, and at which it is where the record agrees (own simulations). */
+const CURVE_PAST_DAYS = 0.4;
+const LINE_PAST_DAYS = 0.15;
+/** By how much the gas may be more than the curve says, once the peak is over (own simulations: nine in ten below 1.3 times). */
+const CURVE_GAS_ROOM = 1.5;
+
 /** Hours that a cold vessel may need to work as it could, once it is warm again (ours). */
 const WARMING_H = 60;
 
@@ -58,6 +64,9 @@ export class Watch extends Intake {
       this.judgeEnd(hour);
       this.judgeStall(hour);
       this.judgeRefermentation(hour);
+    } else if (this.started.on) {
+      this.judgePeak(hour);
+      this.judgeAirlock(hour);
     }
     const day = this.line(48);
     hold(this.rising, hour, day !== null && day.slope - 1.64 * day.se > 0.25, 2, day !== null && day.slope - 1.64 * day.se <= 0);
@@ -117,16 +126,28 @@ export class Watch extends Intake {
       else if (most && most.rate - rate > Math.max(0.06 * most.rate, 1.15 * Math.hypot(line.se, most.se))) below = true;
       if (window === 24 && rate > this.maxRate) this.maxRate = rate;
     }
-    let fitted = false;
-    const fit = Math.floor(hour) % 12 === 0 ? this.fit() : null;
-    if (fit) {
-      const tau = this.track.tauAt(hour) - this.track.tauAt(this.segment.from);
-      const now = fit.curve.rate(tau) * this.track.warmthAt(hour);
-      this.maxFittedRate = Math.max(this.maxFittedRate * 0.98, now);
-      fitted = now < 0.8 * this.maxFittedRate && fit.curve.share(tau) < 0.78;
-    }
+    const passed = this.pastCurvePeak();
+    const seen = passed === null ? below : passed > CURVE_PAST_DAYS || (below && passed > LINE_PAST_DAYS);
     // A drift or the first small fall has no peak.
-    hold(this.peaked, hour, (below || fitted) && this.progress() >= 0.12, 2, false);
+    hold(this.peaked, hour, seen && this.progress() >= 0.12, 2, false);
+  }
+
+  /** Thermal days since the steepest place of the fitted curve; null without a curve, or where it says that hardly anything has fallen. */
+  private pastCurvePeak(): number | null {
+    const fit = this.fit();
+    if (!fit) return null;
+    const tau = this.track.tauAt(this.lookedAt) - this.track.tauAt(this.segment.from);
+    const passed = tau - fit.curve.peakTau(tau);
+    return passed > 0 && fit.curve.share(tau) > 0.85 ? 0 : passed;
+  }
+
+  /** Gas now by the fitted curve with room for its error, L/h: what is gone by while the float gives nothing. */
+  private gasByCurve(): number {
+    const fit = this.fit();
+    const passed = this.pastCurvePeak();
+    if (!fit || passed === null || passed < CURVE_PAST_DAYS) return Number.POSITIVE_INFINITY;
+    const tau = this.track.tauAt(this.lookedAt) - this.track.tauAt(this.segment.from);
+    return CURVE_GAS_ROOM * gasLPerH(fit.curve.rate(tau) * this.track.warmthAt(this.lookedAt), this.setup.volumeL);
   }
 
   private judgeAirlock(hour: number): void {
@@ -142,6 +163,9 @@ export class Watch extends Intake {
       upper = Math.min(upper, gasLPerH(-line.slope + 1.15 * line.se, this.setup.volumeL));
       if (window === 12 || lower === Number.NEGATIVE_INFINITY) lower = gasLPerH(-line.slope - 1.64 * line.se, this.setup.volumeL);
     }
+    // A float that is stuck or silent leaves what it told before.
+    const blind = this.frozen !== null || upper === Number.POSITIVE_INFINITY;
+    if (blind) upper = this.gasByCurve();
     const limit = this.swapGas();
     // A cold vessel with sugar left is quiet only until somebody warms it.
     const waiting = this.lastCold !== null && hour - this.lastCold < WARMING_H && this.gasIfWarmed() > limit;
@@ -172,13 +196,14 @@ export class Watch extends Intake {
     const left = slow && this.tail() ? this.remainingNow() : null;
     const most = left && left.most;
 
-    const done = most !== null && most < TERMINAL_POINTS && upper48! < 0.9 && this.quietSinceAddition(60, 120);
+    const sugary = level !== null && this.sweetStill(level);
+    const done = most !== null && most < TERMINAL_POINTS && upper48! < 0.9 && this.quietSinceAddition(60, 120) && !sugary;
     const wasDone = this.terminal.on;
     hold(this.terminal, hour, done, 2, (lower48 !== null && lower48 > 0.8) || this.refermenting.on);
     if (this.terminal.on && !wasDone) this.plateau = level;
 
     let rackable = this.terminal.on;
-    if (!rackable && inside && this.quietSinceAddition(60, 120) && line24 && -line24.slope < 2.5) {
+    if (!rackable && inside && !sugary && this.quietSinceAddition(60, 120) && line24 && -line24.slope < 2.5) {
       const left = this.remainingNow();
       rackable = left !== null && left.most < RACK_POINTS;
     }
@@ -191,7 +216,7 @@ export class Watch extends Intake {
       this.againstRange(level, rest).most < BOTTLE_POINTS &&
       !this.rising.on &&
       !this.refermenting.on &&
-      !this.sweetStill(level) &&
+      !sugary &&
       !this.mayOnlyBeCold() &&
       this.quietSinceAddition(120, 168);
     hold(this.bottle, hour, still, 4, (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on);

@@ -56,6 +56,27 @@ describe('the calls', () => {
     expect(swapped).toMatchObject({ verdict: 'no', headline: 'Airlock is on already.' });
   });
 
+  it('see that the peak is over, and ask for the airlock, though the float was silent or stuck meanwhile', () => {
+    let over = 0;
+    for (let day = 0; day < 12; day += 0.25) if (cider(day) - cider(day + 0.25) > cider(over) - cider(over + 0.25)) over = day;
+    const readings = record(over + 6, cider);
+    const gap = readings.filter(({ at: when }) => when < PITCH + (over + 1) * DAY);
+    expect(at(over + 4, gap).stage).toBe('slowing');
+    const stuck = readings.map((reading) => (reading.at > PITCH + (over + 2) * DAY ? { ...reading, gravity: 1 + (cider(over + 2) + 0.01 * Math.sin(reading.at)) / 1000 } : reading));
+    const { sensor, neck } = at(over + 6, stuck, { vesselL: 6 }).calls;
+    expect(sensor.kind).toBe('frozen');
+    expect(neck.verdict).toBe('yes');
+    expect(at(over + 2.5, stuck, { vesselL: 4.6 }).calls.neck.verdict).not.toBe('yes');
+  });
+
+  it('do not call it finished or ready to rack while sugar that went in at rest lies still', () => {
+    const events: BatchEvent[] = [{ at: PITCH + 30 * DAY, kind: 'addition', sugarG: 60 }];
+    const sweet = (day: number): number => (day < 30 ? cider(day) : cider(day) + 5.2);
+    const { calls, stage } = at(44, record(44, sweet), { events });
+    expect(stage).not.toBe('terminal');
+    expect(calls.rack.verdict).not.toBe('yes');
+  });
+
   it('do not let a ferment that ends be bottled before it holds, and do afterwards', () => {
     const readings = record(40, cider);
     expect(at(8, readings).calls.bottle.verdict).not.toBe('yes');
