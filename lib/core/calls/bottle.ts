@@ -79,6 +79,14 @@ export function bottleCall(scene: Scene): Call {
       changesIt: 'Changes it: the same gravity once it is warm.',
     });
   }
+  if (watch.terminal.on && level > top) {
+    return call('unknown', 'Not known whether it has stopped for good.', `${gravityWords(level)} and level for days, but ${gravityWords(top)} or less was expected.`, {
+      since: sinceOf(scene, watch.terminal.since),
+      evidence: figures,
+      act: 'Check with a hydrometer; a warm sample with fresh yeast tells where it would end.',
+      changesIt: 'Changes it: a hydrometer reading.',
+    });
+  }
   const hours = hoursToBottle(scene);
   const expectedAt = hours === null ? null : later(scene, hours);
   if (expectedAt !== null && hours !== null && hours <= 96 && watch.terminal.on) {

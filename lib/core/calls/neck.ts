@@ -32,10 +32,10 @@ export function neckCall(scene: Scene): Call {
   if (watch.airlock.on) {
     if (standsHigh(foam)) return leaveOn(scene, foam, gas ? `Gas is low, ${gasWords(gas.value)}.` : null, figures);
     const since = sinceOf(scene, watch.airlock.since);
-    return call('yes', `Swap tube for airlock: from ${since === null ? 'now' : when(scene, since)}.`, gas ? `Krausen falling; gas ${gasWords(gas.value)}, under ${gasWords(limit)}.` : 'Krausen falling.', {
+    return call('yes', `Swap tube for airlock: from ${since === null ? 'now' : when(scene, since)}.`, gas ? `Krausen falling; gas ${gasWords(gas.value)}, under ${gasWords(limit)}.` : blindly(scene), {
       since,
       evidence: figures,
-      act: 'Swap the tube for an airlock with water in it.',
+      act: gas ? 'Swap the tube for an airlock with water in it.' : 'Look at the foam, then swap the tube for an airlock with water in it.',
       changesIt: `Changes it: gas over ${gasWords(1.3 * limit)}.`,
     });
   }
@@ -62,6 +62,9 @@ const foamWords = (scene: Scene, foam: SeenFoam): string => `Foam ${foam.foam ==
 /** What would be time to swap, were there not foam that could reach an airlock. */
 export const leaveOn = (scene: Scene, foam: SeenFoam, gas: string | null, figures: readonly Evidence[]): Call =>
   call('hold', 'Leave the tube on: foam stands high.', [foamWords(scene, foam), gas].filter(Boolean).join(' '), { since: foam.at, evidence: figures, act: 'Look at the foam again tomorrow.', changesIt: 'Changes it: foam down to a ring.' });
+
+/** The float gives no gas figure now: what it gave before says that the gas is low. */
+const blindly = ({ watch }: Scene): string => `Krausen falling, by what the sensor gave before it ${watch.frozen ? 'stuck' : 'fell silent'}.`;
 
 /** Hours until the curve's gas is under the limit, with the nine hours it must stay there; null without a curve. */
 function hoursToSwap(scene: Scene, limit: number): number | null {

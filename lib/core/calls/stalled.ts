@@ -42,6 +42,9 @@ export function stalledCall(scene: Scene): Call {
       changesIt: 'Changes it: a fall of 2.6 points a day, or less than 5 points to go.',
     });
   }
+  if (watch.terminal.on && level > top) {
+    return call('no', 'Finished, a little above its range.', `${gravityWords(level)} and level for days; ${gravityWords(top)} or less was expected.`, { evidence: figures });
+  }
   if (watch.stuck.run > 0 || (level > top && level <= top + 3 && rate !== null && rate.value < 0.3 && hour > 120)) {
     return call('unknown', `Unclear: ${gravityWords(level)} and hardly falling.`, `The expected end is ${gravityWords(top)} or less.`, {
       evidence: figures,

@@ -1,3 +1,5 @@
+import type { DrinkKind } from '../types';
+
 /**
  * Intervals of the forecast: the fit's own standard deviation times a factor by
  * progress, so that they hold what they say (split conformal prediction: Lei,
@@ -12,12 +14,26 @@ const FACTOR_80 = [0.92, 0.95, 0.95, 0.98, 1.1, 1.6];
 const FACTOR_95 = [1.15, 1.15, 1.15, 1.15, 1.8, 3.0];
 /** Half width of the 80 % interval of ln(time to the end + 12 h). */
 const DATE_80 = [0.87, 0.61, 0.56, 0.52, 0.69, 1.2];
-/** By how much the curve's hours to go are too many, as the logarithm of the hours and 12: the middle on the tuning seeds. */
-const DATE_LATE = [0.2, 0.2, 0.12, 0.06, 0.06, 0];
+/**
+ * By how much the hours to go are too many, as their logarithm (of the hours and 12) by
+ * progress: by the curve, which slows down too long for honey and fruit, and by the
+ * tail. About the middle on the tuning seeds and on batches of other equations.
+ */
+const LATE: Record<DrinkKind, { curve: readonly number[]; tail: number }> = {
+  beer: { curve: [0.1, 0.1, 0.05, 0, 0, 0], tail: 0 },
+  cider: { curve: [0.1, 0.1, 0.1, 0.1, 0.1, 0.1], tail: 0.25 },
+  mead: { curve: [0.3, 0.3, 0.25, 0.2, 0.2, 0.2], tail: 0.25 },
+  wine: { curve: [0.3, 0.3, 0.25, 0.2, 0.2, 0.2], tail: 0.25 },
+};
+/** Share of the fall from which the tail tells of the date, and the share more at which it alone does (own simulations). */
+const TAIL_SPEAKS_FROM = 0.7;
+const TAIL_TAKES_OVER = 0.25;
+/** Spans of time spread evenly in their logarithm; half a day keeps it tame near nought. */
+const TAME_H = 12;
 const Z80 = 1.2816;
 const Z95 = 1.96;
 /** What the curve's own shape may be wrong by at the end, points. */
-const SHAPE_SD = 0.6;
+export const SHAPE_SD = 0.6;
 
 export function progressBin(done: number): number {
   let bin = 0;
@@ -42,7 +58,14 @@ export function hoursInterval(hours: number, done: number): { lo: number; hi: nu
   };
 }
 
-/** The hours still to go by the curve alone, without its leaning to the late side. */
-export function calibratedHours(hours: number, done: number): number {
-  return Math.max(0, (hours + 12) * Math.exp(-DATE_LATE[progressBin(done)]!) - 12);
+/** Whether the tail is asked for the date when so much of the fall is done. */
+export const tailTellsDate = (done: number): boolean => done > TAIL_SPEAKS_FROM;
+
+/** The hours still to go by the curve and by the tail, without their leaning to the late side; the further the fall, the more by the tail. */
+export function calibratedHours(byCurve: number, byTail: number | null, done: number, kind: DrinkKind): number {
+  const late = LATE[kind];
+  const curve = Math.log(byCurve + TAME_H) - late.curve[progressBin(done)]!;
+  const share = byTail === null ? 0 : Math.min(1, Math.max(0, (done - TAIL_SPEAKS_FROM) / TAIL_TAKES_OVER));
+  const tail = byTail === null ? 0 : Math.log(byTail + TAME_H) - late.tail;
+  return Math.max(0, Math.exp((1 - share) * curve + share * tail) - TAME_H);
 }

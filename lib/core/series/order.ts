@@ -44,3 +44,8 @@ export function median(values: ArrayLike<number>): number {
   const copy = Float64Array.from(values);
   return medianInPlace(copy, 0, copy.length);
 }
+
+/** Median of three. */
+export function middleOf(a: number, b: number, c: number): number {
+  return Math.max(Math.min(a, b), Math.min(Math.max(a, b), c));
+}

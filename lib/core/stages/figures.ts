@@ -1,6 +1,6 @@
 import type { BatchSetup, Instant, Neck } from '../types';
 import type { CurveFit } from '../fit/map';
-import { calibratedHours } from '../fit/intervals';
+import { calibratedHours, SHAPE_SD, tailTellsDate } from '../fit/intervals';
 import { finalGravityPrior, type Normal } from '../fit/priors';
 import { gasLPerH, swapGasLPerH } from '../gas/gas';
 import type { Line } from '../series/line';
@@ -9,6 +9,7 @@ import { Track, type Segment } from '../series/track';
 import { pointsOf } from '../units/convert';
 import { fitSegment } from './curve';
 import { latch } from './latch';
+import { held, mixed, remaining, shareOfTail, type Remaining } from './remaining';
 
 /** Standard deviation of a hydrometer reading by hand, points (our own). */
 export const HAND_SD = 0.7;
@@ -17,26 +18,10 @@ const TAIL_H = 6;
 
 /** Share of the fall that is done when the tail is asked for what is left. */
 const NEAR_END = 0.8;
-/** Share of the fall from which the tail tells of the date, and the share more at which it alone does (own simulations). */
-const TAIL_SPEAKS_FROM = 0.6;
-const TAIL_TAKES_OVER = 0.3;
-
-/** Share of the fall, by the curve, from which the tail tells of the final gravity (own simulations). */
-const TAIL_SHOWS_END_FROM = 0.8;
-
 interface TailCache {
   at: number;
   tail: Tail | null;
 }
-
-/** Points still to fall, how well that is known, and the most it may be nine times in ten. */
-export interface Remaining {
-  value: number;
-  sd: number;
-  most: number;
-}
-
-const remaining = (value: number, sd: number): Remaining => ({ value, sd, most: value + 1.28 * sd });
 
 /** A float whose readings have all but stopped flickering. */
 export interface FrozenState {
@@ -277,7 +262,7 @@ export class Figures {
     const tail = this.tailNow();
     if (tail) return this.againstRange(level, tail);
     const fit = this.fit();
-    return fit && remaining(level - fit.parameters[1]!, Math.hypot(fit.fgSd, 0.6));
+    return fit && remaining(level - fit.parameters[1]!, Math.hypot(fit.fgSd, SHAPE_SD));
   }
 
   /** A tail held against what the yeast's range leaves to be had. */
@@ -290,17 +275,21 @@ export class Figures {
     return remaining(both.value, both.sd);
   }
 
-  /** Expected final gravity, points: by the curve, and the further the fall is by it, the more by the tail. */
-  expectedFg(): number | null {
+  /** Points still to fall, by the curve until the fall is nearly over and the further it is by it, the more by the tail. */
+  leftOnCurve(): Remaining | null {
     const left = this.remainingNow();
     const level = this.levelNow();
-    if (left === null || level === null) return null;
     const fit = this.fit();
-    if (!fit) return level - left.value;
-    const { og, fg } = fit.curve;
-    const done = og > fg ? (og - level) / (og - fg) : 1;
-    const share = Math.min(1, Math.max(0, (done - TAIL_SHOWS_END_FROM) / (1 - TAIL_SHOWS_END_FROM)));
-    return share * (level - left.value) + (1 - share) * fg;
+    if (left === null || level === null || !fit) return left;
+    const byCurve = { value: level - fit.curve.fg, sd: Math.hypot(fit.fgSd, SHAPE_SD) };
+    return mixed(byCurve, left, shareOfTail(fit.curve, level));
+  }
+
+  /** Expected final gravity, points. */
+  expectedFg(): number | null {
+    const left = this.leftOnCurve();
+    const level = this.levelNow();
+    return left === null || level === null ? null : level - left.value;
   }
 
   /** Hours until the gravity is within a point of its end; null without a curve or a tail. */
@@ -316,7 +305,7 @@ export class Figures {
     const fit = this.fit();
     const level = this.levelNow();
     const done = this.progress(level);
-    const tail = this.peaked.on && level !== null && done > TAIL_SPEAKS_FROM ? this.tail() : null;
+    const tail = this.peaked.on && level !== null && tailTellsDate(done) ? this.tail() : null;
     const left = tail && level !== null ? this.againstRange(level, tail).value : 0;
     const byTail = tail && (left <= points ? 0 : (24 * Math.log(left / points)) / tail.pace);
     if (!fit) return byTail;
@@ -324,12 +313,8 @@ export class Figures {
     const drop = curve.og - curve.fg;
     if (drop <= points) return 0;
     const tauNow = this.track.tauAt(this.lookedAt) - this.track.tauAt(this.segment.from);
-    const span = ((curve.tauOfShare(points / drop) - tauNow) / this.track.warmthAt(this.lookedAt)) * 24;
-    const byCurve = calibratedHours(Math.max(0, span), done);
-    if (byTail === null) return byCurve;
-    // Spans of time spread evenly in their logarithm; half a day keeps it tame near nought.
-    const share = Math.min(1, (done - TAIL_SPEAKS_FROM) / TAIL_TAKES_OVER);
-    return Math.exp((1 - share) * Math.log(byCurve + 12) + share * Math.log(byTail + 12)) - 12;
+    const byCurve = ((curve.tauOfShare(points / drop) - tauNow) / this.track.warmthAt(this.lookedAt)) * 24;
+    return calibratedHours(Math.max(0, byCurve), byTail, done, this.setup.kind);
   }
 
   /** Share of the whole expected fall that is done, 0 to 1. */
@@ -398,11 +383,4 @@ export class Figures {
     const before = this.track.temperature(this.lookedAt - 96, this.lookedAt - 48);
     return before !== null && before - now > 4;
   }
-}
-
-/** Two independent estimates as one, weighted by their variances. */
-function held(a: { value: number; sd: number }, b: { value: number; sd: number }): { value: number; sd: number } {
-  const wa = 1 / a.sd ** 2;
-  const wb = 1 / b.sd ** 2;
-  return { value: (wa * a.value + wb * b.value) / (wa + wb), sd: Math.sqrt(1 / (wa + wb)) };
 }

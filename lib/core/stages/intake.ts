@@ -1,6 +1,7 @@
 import type { BatchEvent, BatchSetup, Instant, Reading } from '../types';
 import { POINTS_PER_G_PER_L } from '../gravity/extract';
 import { median } from '../series/order';
+import { findStep, findSugar, stepAt } from '../series/steps';
 import { pointsOf } from '../units/convert';
 import { Figures, HAND_SD } from './figures';
 import { clear } from './latch';
@@ -139,7 +140,7 @@ export class Intake extends Figures {
     const { track } = this;
     this.pendingRackings = this.pendingRackings.filter((hour) => {
       if (this.lookedAt < hour + 7.5) return true;
-      const step = track.stepAt(hour);
+      const step = stepAt(track, hour);
       if (step !== null && Math.abs(step) > 0.4 && Math.abs(step) < 15) {
         track.shift(hour, step, 'racking');
         this.lowest = null;
@@ -154,13 +155,13 @@ export class Intake extends Figures {
       if (this.sweetened) this.plateau = this.segment.level;
     }
     const quietFrom = Math.max(this.segment.from, this.frozen ? this.lookedAt : 0);
-    const sugar = track.findSugar(this.lookedAt, quietFrom);
+    const sugar = findSugar(track, this.lookedAt, quietFrom);
     if (sugar && !this.nearEvent(sugar.hour)) {
       this.restart(sugar.hour, this.segment.effectiveOg + sugar.points, null, false);
       this.forget();
       return;
     }
-    const step = track.findStep(this.lookedAt, quietFrom);
+    const step = findStep(track, this.lookedAt, quietFrom);
     if (step && !this.nearEvent(step.hour)) {
       if (step.points > 5.5) this.restart(step.hour, this.segment.effectiveOg + step.points, null, false);
       else {

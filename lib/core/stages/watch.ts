@@ -7,15 +7,18 @@ import { hold } from './latch';
 export { LOOK_H } from './intake';
 
 /** Points that may still come, nine times in ten, when a batch may be racked, when it is called finished, and when it may be bottled. */
-export const RACK_POINTS = 3.9;
+export const RACK_POINTS = 4.4;
 export const TERMINAL_POINTS = 1.6;
-export const BOTTLE_POINTS = 0.95;
+export const BOTTLE_POINTS = 1;
 /** Hours after the pitch at which a start is overdue. */
 export const OVERDUE_H: Record<BatchSetup['kind'], number> = { beer: 48, cider: 72, mead: 72, wine: 72 };
 
 /** Hours between two judgements of a batch that rests ready for bottles, and how far its level may move meanwhile, points (ours). */
 const REST_LOOK_H = 12;
 const REST_POINTS = 0.8;
+
+/** Hours of rest after which a level a little above the yeast's range is taken for the end (ours). */
+const RESTS_H = 72;
 
 /** Thermal days past the steepest place of the curve at which the peak is over by the curve alone, and at which it is where the record agrees (own simulations). */
 const CURVE_PAST_DAYS = 0.4;
@@ -71,7 +74,7 @@ export class Watch extends Intake {
     const day = this.line(48);
     hold(this.rising, hour, day !== null && day.slope - 1.64 * day.se > 0.25, 2, day !== null && day.slope - 1.64 * day.se <= 0);
     const settled = this.quietSinceAddition(48, 240);
-    hold(this.drifting, hour, this.rising.on && settled && !this.segment.fruit && hour > 96, 8, !this.rising.on);
+    hold(this.drifting, hour, (this.rising.on || (day !== null && day.slope > 0 && this.climbs(168))) && settled && !this.segment.fruit && hour > 96, 8, !this.rising.on);
     if (this.lastHand && Math.abs(this.lastHand.miss) > 4 && hour - this.lastHand.hour < 168 && this.lastHand.hour > 12) {
       hold(this.drifting, hour, true, 1, false);
     }
@@ -192,7 +195,7 @@ export class Watch extends Intake {
     const inside = ground !== null && ground <= this.zoneTop() && this.peaked.on;
     // The tail is only asked where the fall is slow enough for it to matter.
     const ceiling = !this.terminal.on ? 0.9 : !this.bottle.on ? 0.5 : 0;
-    const slow = inside && upper48 !== null && upper48 < ceiling;
+    const slow = (inside || this.restsAbove()) && upper48 !== null && upper48 < ceiling;
     const left = slow && this.tail() ? this.remainingNow() : null;
     const most = left && left.most;
 
@@ -202,14 +205,19 @@ export class Watch extends Intake {
     hold(this.terminal, hour, done, 2, (lower48 !== null && lower48 > 0.8) || this.refermenting.on);
     if (this.terminal.on && !wasDone) this.plateau = level;
 
+    const line12 = this.line(12) ?? line24;
+    const paces = [line12, line24].flatMap((line) => (line ? [-line.slope] : []));
     let rackable = this.terminal.on;
-    if (!rackable && inside && !sugary && this.quietSinceAddition(60, 120) && line24 && -line24.slope < 2.5) {
-      const left = this.remainingNow();
+    if (!rackable && inside && !sugary && this.quietSinceAddition(60, 120) && Math.min(...paces) < 3) {
+      const left = this.leftOnCurve();
       rackable = left !== null && left.most < RACK_POINTS;
     }
-    hold(this.rack, hour, rackable, 2, line24 !== null && -line24.slope - 1.64 * line24.se > 3);
+    hold(this.rack, hour, rackable, 2, line12 !== null && -line12.slope - 1.64 * line12.se > 3);
 
-    const rest = most !== null && upper48! < 0.5 ? this.longTail() : null;
+    const line72 = this.line(72);
+    const quiet = upper48 !== null && upper48 < 0.5 && (line72 === null || -line72.slope + 1.28 * line72.se < 0.6);
+    // Both ends must say so: the shorter sees a late fall, the longer is seldom deceived.
+    const rest = most !== null && most < BOTTLE_POINTS && quiet && inside ? this.longTail() : null;
     const still =
       rest !== null &&
       level !== null &&
@@ -220,6 +228,21 @@ export class Watch extends Intake {
       !this.mayOnlyBeCold() &&
       this.quietSinceAddition(120, 168);
     hold(this.bottle, hour, still, 4, (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on);
+  }
+
+  /** It rests between where it should end and where it would be stuck, and has done so for days: the yeast's range was a little wrong. */
+  private restsAbove(): boolean {
+    const ground = this.groundLevel();
+    if (!this.peaked.on || ground === null || ground <= this.zoneTop() || ground > this.stuckFloor()) return false;
+    const flat = this.flatSince();
+    const tail = this.tail();
+    return flat !== null && this.lookedAt - flat >= RESTS_H && !this.coldNow() && tail !== null && tail.remaining + 1.28 * Math.hypot(tail.sd, 0.2) < BOTTLE_POINTS;
+  }
+
+  /** The gravity climbs, which a ferment does not: what is seen is the float. */
+  private climbs(window: 72 | 168): boolean {
+    const line = this.line(window);
+    return line !== null && line.slope - 1.64 * line.se > (window === 72 ? 0.12 : 0.06);
   }
 
   private judgeStall(hour: number): void {
@@ -234,13 +257,14 @@ export class Watch extends Intake {
       settled &&
       (slowerThan(line48, 0.5, 0.75) || slowerThan(this.line(72), 0.35, 0.5)) &&
       (hour - (this.started.since ?? hour) > 96 || this.progress(level) > 0.12);
+    const climbing = (flat || this.stuck.on) && (this.drifting.on || this.climbs(72) || this.climbs(168));
     const moving =
       this.stuck.on &&
       [8, 24].some((window) => {
         const line = this.line(window);
         return line !== null && -line.slope - (window === 24 ? 1.64 : 2.5) * line.se > 1;
       });
-    hold(this.stuck, hour, flat, 3, moving || level < limit);
+    hold(this.stuck, hour, flat && !climbing, 3, moving || level < limit || climbing);
     if (this.stuck.on) this.stuckCold = this.coldNow();
 
     const rate = line48 ? -line48.slope : null;
