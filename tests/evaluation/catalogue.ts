@@ -1,5 +1,6 @@
 import type { BatchEvent, BatchSetup, DrinkKind, Reading } from '@/lib/core/types';
 import { ferment, pointsFrom, type Must, type Truth, type TruthEvent, type Yeast } from './ferment';
+import { mistell } from './mistold';
 import { Random } from './random';
 import { sense, usualSensor, type SensorFaults } from './sensor';
 
@@ -14,6 +15,8 @@ export interface Case {
   finals: { from: number; points: number }[];
   endH: number;
   frozen: { from: number; to: number } | null;
+  /** Drift of its float, points a day. */
+  driftPerDay: number;
   /** Hour of a sweetening after which it works again. */
   sweetenedAt: number | null;
 }
@@ -171,6 +174,7 @@ export function makeCase(group: string, index: number, seed: number): Case {
     finals,
     endH,
     frozen: draft.faults.frozen,
+    driftPerDay: draft.faults.driftPerDay,
     sweetenedAt: draft.sweetenedAt,
   };
 }
@@ -370,31 +374,6 @@ function told(d: Draft, truth: Truth, og: number, volumeL: number, vesselL: numb
     events: d.events,
     timeZone: 'UTC',
   };
-}
-
-function mistell(group: string, setup: BatchSetup, r: Random, final: number, og: number): void {
-  switch (group) {
-    case 'yeast range 4 points off': {
-      const mid = 1 - (final + (r.chance(0.5) ? 4 : -4)) / og;
-      setup.attenuation = { min: mid - 0.035, max: mid + 0.035 };
-      break;
-    }
-    case 'no original gravity':
-      setup.originalGravity = null;
-      break;
-    case 'volume off by a quarter': {
-      const factor = r.chance(0.5) ? 0.75 : 1.25;
-      setup.volumeL *= factor;
-      setup.vesselL = Math.max(setup.vesselL, setup.volumeL * 1.05);
-      break;
-    }
-    case 'no yeast told':
-      setup.attenuation = null;
-      setup.alcoholToleranceAbv = null;
-      break;
-    default:
-      break;
-  }
 }
 
 export function* catalogue(seed: number, groups: readonly (readonly [string, number])[]): Generator<Case> {

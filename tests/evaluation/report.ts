@@ -13,6 +13,8 @@ const GOALS: Record<Decision, { recall: number; falseAlarms: number; delay: numb
   'ready to rack': { recall: 0.93, falseAlarms: 0.1, delay: 18 },
   'ready to bottle': { recall: 0.92, falseAlarms: 0.04, delay: 78 },
   'sensor frozen': { recall: 0.95, falseAlarms: 0.03, delay: 12 },
+  // Our own goal: the specification has none.
+  'sensor drifting': { recall: 0.8, falseAlarms: 0.02, delay: null },
   'working again': { recall: 0.95, falseAlarms: 0.02, delay: null },
   temperature: { recall: 0.98, falseAlarms: 0.1, delay: null },
 };

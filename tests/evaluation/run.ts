@@ -26,6 +26,7 @@ export function said(assessment: Assessment): Record<Decision, boolean> {
     'ready to rack': calls.rack.verdict === 'yes',
     'ready to bottle': calls.bottle.verdict === 'yes',
     'sensor frozen': calls.sensor.verdict === 'yes' && calls.sensor.kind === 'frozen',
+    'sensor drifting': calls.sensor.verdict === 'yes' && calls.sensor.kind === 'drifting',
     'working again': calls.bottle.kind === 'refermentation',
     temperature: calls.temperature.verdict === 'yes',
   };

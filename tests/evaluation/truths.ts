@@ -14,6 +14,7 @@ export const DECISIONS = [
   'ready to rack',
   'ready to bottle',
   'sensor frozen',
+  'sensor drifting',
   'working again',
   'temperature',
 ] as const;
@@ -31,9 +32,13 @@ export const LIMIT_H: Record<Decision, number> = {
   'ready to rack': 72,
   'ready to bottle': 144,
   'sensor frozen': 24,
+  'sensor drifting': 168,
   'working again': 96,
   temperature: 6,
 };
+
+/** Points a day from which a float is said to drift. */
+const DRIFTS = 0.1;
 
 /** Hours after a logged racking in which it is not said that it may be racked. */
 const RACKED_LATELY_H = 96;
@@ -146,7 +151,8 @@ export class Truths {
         const from = this.peaks[this.peaks.length - 1]!.at;
         if (this.started() === null) return [];
         return one(
-          this.first(Math.max(48, from), (h) => this.rate(h) < 1.6 && this.remaining(h) > 9 && this.remaining(h + 144) > 1 && !this.isStuck(h) && this.rate(h + 36) < 1.9 && !this.isStuck(h + 60)),
+          // What has stopped is stuck, not slow.
+          this.first(Math.max(48, from), (h) => this.rate(h) > 0.4 && this.rate(h) < 1.6 && this.remaining(h) > 9 && this.remaining(h + 144) > 1 && !this.isStuck(h) && this.rate(h + 36) < 1.9 && !this.isStuck(h + 60)),
         );
       }
       case 'stuck': {
@@ -161,6 +167,9 @@ export class Truths {
         return one(this.first(this.lastStretch + 1, (h) => this.remaining(h) <= 0.5));
       case 'sensor frozen':
         return batch.frozen ? [batch.frozen.from] : [];
+      case 'sensor drifting':
+        // Only a climb can be told from a ferment: four days in which it outruns what still falls.
+        return batch.driftPerDay < DRIFTS ? [] : one(this.first(96, (h) => this.gravity(h) - this.gravity(h + 96) < 0.3 * 4 * batch.driftPerDay));
       case 'working again':
         return batch.sweetenedAt === null ? [] : one(this.first(batch.sweetenedAt, (h) => this.gravity(batch.sweetenedAt! + 1) - this.gravity(h) >= 1));
       case 'temperature': {
@@ -215,6 +224,8 @@ export class Truths {
         return this.remaining(hour) <= 1;
       case 'sensor frozen':
         return batch.frozen !== null && hour >= batch.frozen.from && hour <= batch.frozen.to + 14;
+      case 'sensor drifting':
+        return Math.abs(batch.driftPerDay) >= DRIFTS;
       case 'working again':
         return batch.sweetenedAt !== null && hour > batch.sweetenedAt;
       case 'temperature': {

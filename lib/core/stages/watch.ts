@@ -269,12 +269,14 @@ export class Watch extends Intake {
 
     const rate = line48 ? -line48.slope : null;
     let crawling = false;
-    if (this.peaked.on && hour > 48 && line48 && rate !== null && rate + line48.se < 2.2 && level > prior.mean + 7.5 && !this.stuck.on && this.quietSinceAddition(60, 96)) {
+    // What is left by the yeast's range, or by the curve where that says more.
+    const left = this.peaked.on && rate !== null ? Math.max(level - prior.mean, this.leftOnCurve()?.value ?? 0) : 0;
+    if (hour > 48 && line48 && rate !== null && rate + line48.se < 2.2 && left > 7.5 && !this.stuck.on && !this.drifting.on && this.quietSinceAddition(60, 96)) {
       const end = this.hoursToEnd();
       const fg = this.expectedFg();
-      crawling = (end !== null && end > 130) || (fg !== null && fg > this.zoneTop());
+      crawling = (end !== null && end > 130) || left > 6 * Math.max(rate, 0.3) || (fg !== null && fg > this.zoneTop());
     }
-    hold(this.sluggish, hour, crawling, 3, (rate !== null && rate > 2.6) || level < prior.mean + 5 || this.stuck.on);
+    hold(this.sluggish, hour, crawling, 3, (rate !== null && rate > 2.6) || left < 5 || this.stuck.on);
   }
 
   private judgeRefermentation(hour: number): void {

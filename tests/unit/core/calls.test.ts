@@ -101,6 +101,24 @@ describe('the calls', () => {
     expect(calls.bottle.verdict).toBe('hold');
   });
 
+  it('take a level a little above the range for the end after days of rest, but ask for a hydrometer before the bottle', () => {
+    // With its doubt, done is 4.3 or less here, and stuck 5.8 or more.
+    const high = (day: number): number => modelGravity('kinetic', [55, 5, -1, 0.2, -1.2, -1], day);
+    const { calls, stage } = at(30, record(30, high, () => 19, 0.3));
+    expect(stage).toBe('terminal');
+    expect(calls.rack.verdict).toBe('yes');
+    expect(calls.stalled.verdict).toBe('no');
+    expect(calls.bottle).toMatchObject({ verdict: 'unknown' });
+    expect(calls.bottle.act).toMatch(/hydrometer/);
+  });
+
+  it('say of a float that climbs that it drifts, and never that the ferment is stuck', () => {
+    const climbing = (day: number): number => (day < 5 ? cider(day) : cider(day) + 0.4 * (day - 5));
+    const readings = record(45, climbing, () => 19, 0.3);
+    for (const day of [30, 38, 45]) expect(at(day, readings).calls.stalled.verdict).not.toBe('yes');
+    expect(at(38, readings).calls.sensor).toMatchObject({ verdict: 'yes', kind: 'drifting' });
+  });
+
   it('name the cold where the temperature fell below the range', () => {
     const stopped = (day: number): number => Math.max(24, cider(day));
     const { calls } = at(14, record(14, stopped, (day) => (day < 6 ? 19 : 9)));
