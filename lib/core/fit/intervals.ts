@@ -13,7 +13,7 @@ const PROGRESS_EDGES = [0.15, 0.4, 0.65, 0.85, 0.95];
 const FACTOR_80 = [0.92, 0.95, 0.95, 0.98, 1.1, 1.6];
 const FACTOR_95 = [1.15, 1.15, 1.15, 1.15, 1.8, 3.0];
 /** Half width of the 80 % interval of ln(time to the end + 12 h). */
-const DATE_80 = [0.87, 0.61, 0.56, 0.52, 0.69, 1.2];
+const DATE_80 = [0.87, 0.61, 0.62, 0.62, 0.69, 1.2];
 /**
  * By how much the hours to go are too many, as their logarithm (of the hours and 12) by
  * progress: by the curve, which slows down too long for honey and fruit, and by the
@@ -26,8 +26,8 @@ const LATE: Record<DrinkKind, { curve: readonly number[]; tail: number }> = {
   wine: { curve: [0.3, 0.3, 0.25, 0.2, 0.2, 0.2], tail: 0.25 },
 };
 /** Share of the fall from which the tail tells of the date, and the share more at which it alone does (own simulations). */
-const TAIL_SPEAKS_FROM = 0.7;
-const TAIL_TAKES_OVER = 0.25;
+const TAIL_SPEAKS_FROM = 0.65;
+const TAIL_TAKES_OVER = 0.28;
 /** Spans of time spread evenly in their logarithm; half a day keeps it tame near nought. */
 const TAME_H = 12;
 const Z80 = 1.2816;
