@@ -1,4 +1,5 @@
 import type { Call } from '../types';
+import { RACK_PACE } from '../stages/watch';
 import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, fallingWords, gravityWords, pointsWords, rateWords } from './words';
 
@@ -9,7 +10,7 @@ const RACKED_LATELY_MS = 96 * 3_600_000;
 export function rackCall(scene: Scene): Call {
   const { watch, level, rate } = scene;
   const top = watch.zoneTop();
-  const figures = level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG'), ...(rate ? [evidence('fall', Math.max(0, rate.value), 2.5, 'points/d')] : [])];
+  const figures = level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG'), ...(rate ? [evidence('fall', Math.max(0, rate.value), RACK_PACE, 'points/d')] : [])];
   const changesIt = `Changes it: ${gravityWords(top)} or less and about 2 points still to come.`;
   if (!watch.started.on) return call(scene.silentH === null ? 'unknown' : 'no', 'Not yet: it has not started.', 'Racking comes at the end of the fall.', { changesIt });
   if (watch.rack.on && level !== null) {
@@ -22,7 +23,7 @@ export function rackCall(scene: Scene): Call {
       since,
       evidence: figures,
       act: 'Rack off the lees when it suits; full to the neck, airlock on.',
-      changesIt: 'Changes it: a fall of more than 3 points a day.',
+      changesIt: `Changes it: a fall of more than ${pointsWords(RACK_PACE)} a day.`,
     });
   }
   if (watch.stuck.on && level !== null) return call('no', 'Not yet: it has stopped early.', `${gravityWords(level)}; racking takes yeast away that is still needed.`, { evidence: figures, changesIt });

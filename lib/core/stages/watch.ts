@@ -10,6 +10,8 @@ export { LOOK_H } from './intake';
 export const RACK_POINTS = 4.4;
 export const TERMINAL_POINTS = 1.6;
 export const BOTTLE_POINTS = 1;
+/** Fall, points a day, under which it may be racked. */
+export const RACK_PACE = 3;
 /** Hours after the pitch at which a start is overdue. */
 export const OVERDUE_H: Record<BatchSetup['kind'], number> = { beer: 48, cider: 72, mead: 72, wine: 72 };
 
@@ -208,11 +210,11 @@ export class Watch extends Intake {
     const line12 = this.line(12) ?? line24;
     const paces = [line12, line24].flatMap((line) => (line ? [-line.slope] : []));
     let rackable = this.terminal.on;
-    if (!rackable && inside && !sugary && this.quietSinceAddition(60, 120) && Math.min(...paces) < 3) {
+    if (!rackable && inside && !sugary && this.quietSinceAddition(60, 120) && Math.min(...paces) < RACK_PACE) {
       const left = this.leftOnCurve();
       rackable = left !== null && left.most < RACK_POINTS;
     }
-    hold(this.rack, hour, rackable, 2, line12 !== null && -line12.slope - 1.64 * line12.se > 3);
+    hold(this.rack, hour, rackable, 2, line12 !== null && -line12.slope - 1.64 * line12.se > RACK_PACE);
 
     const line72 = this.line(72);
     const quiet = upper48 !== null && upper48 < 0.5 && (line72 === null || -line72.slope + 1.28 * line72.se < 0.6);
