@@ -43,20 +43,22 @@ describe('the calls on simulated batches', () => {
     expect(summary.decisions.stuck.recall).toBeGreaterThan(0.7);
     expect(summary.decisions.sluggish.recall).toBeGreaterThan(0.7);
     expect(summary.decisions['sensor frozen'].recall).toBeGreaterThan(0.6);
+    expect(summary.decisions['sensor drifting'].falsePerMonth).toBeLessThan(0.06);
     expect(summary.decisions['working again'].recall).toBeGreaterThan(0.6);
   });
 
   it('find the peak, the swap, the end, and the days of racking and bottling', () => {
-    for (const decision of ['past peak', 'airlock ok', 'terminal', 'ready to rack', 'ready to bottle'] as const) {
-      expect(summary.decisions[decision].recall, decision).toBeGreaterThan(0.82);
-    }
+    const least = { 'past peak': 0.9, 'airlock ok': 0.88, terminal: 0.86, 'ready to rack': 0.8, 'ready to bottle': 0.82 } as const;
+    for (const decision of Object.keys(least) as (keyof typeof least)[]) expect(summary.decisions[decision].recall, decision).toBeGreaterThan(least[decision]);
+    expect(summary.decisions['ready to rack'].delayMedian).toBeLessThan(20);
     expect(summary.rackDateMae).toBeLessThan(1.3);
-    expect(summary.forecasts['50']!.dateMedian).toBeLessThan(2);
-    expect(summary.forecasts['75']!.dateMedian).toBeLessThan(1.3);
+    expect(summary.forecasts['50']!.dateMedian).toBeLessThan(1.8);
+    expect(summary.forecasts['75']!.dateMedian).toBeLessThan(1.1);
   });
 
   it('cry wolf seldom', () => {
     expect(summary.decisions['ready to bottle'].falsePerMonth).toBeLessThan(0.07);
+    expect(summary.decisions['past peak'].falsePerMonth).toBeLessThan(0.12);
     expect(summary.decisions['ready to rack'].falsePerMonth).toBeLessThan(0.18);
     expect(summary.decisions.stuck.falsePerMonth).toBeLessThan(0.15);
     expect(summary.decisions.sluggish.falsePerMonth).toBeLessThan(0.08);

@@ -28,6 +28,9 @@ const LINE_PAST_DAYS = 0.15;
 /** By how much the gas may be more than the curve says, once the peak is over (own simulations: nine in ten below 1.3 times). */
 const CURVE_GAS_ROOM = 1.5;
 
+/** Share of what the curve says is left that counts against the yeast's range (ours): early it may see too much. */
+const CURVE_SURE = 0.75;
+
 /** Hours that a cold vessel may need to work as it could, once it is warm again (ours). */
 const WARMING_H = 60;
 
@@ -122,17 +125,24 @@ export class Watch extends Intake {
   private judgePeak(hour: number): void {
     if (this.peaked.on) return;
     let below = false;
+    let plain = false;
     for (const window of [12, 18, 24, 36]) {
       const line = this.line(window);
       if (!line) continue;
       const rate = -line.slope;
       const most = this.maxRates.get(window);
       if (rate > 1 && (!most || rate > most.rate)) this.maxRates.set(window, { rate, se: line.se });
-      else if (most && most.rate - rate > Math.max(0.06 * most.rate, 1.15 * Math.hypot(line.se, most.se))) below = true;
+      else if (most) {
+        const fallen = most.rate - rate;
+        const doubt = Math.hypot(line.se, most.se);
+        below ||= fallen > Math.max(0.06 * most.rate, 1.15 * doubt);
+        plain ||= fallen > Math.max(0.2 * most.rate, 2.5 * doubt);
+      }
       if (window === 24 && rate > this.maxRate) this.maxRate = rate;
     }
     const passed = this.pastCurvePeak();
-    const seen = passed === null ? below : passed > CURVE_PAST_DAYS || (below && passed > LINE_PAST_DAYS);
+    // Where the record is plain the curve is not asked: a late start can put its turn too late.
+    const seen = plain || (passed === null ? below : passed > CURVE_PAST_DAYS || (below && passed > LINE_PAST_DAYS));
     // A drift or the first small fall has no peak.
     hold(this.peaked, hour, seen && this.progress() >= 0.12, 2, false);
   }
@@ -272,7 +282,7 @@ export class Watch extends Intake {
     const rate = line48 ? -line48.slope : null;
     let crawling = false;
     // What is left by the yeast's range, or by the curve where that says more.
-    const left = this.peaked.on && rate !== null ? Math.max(level - prior.mean, this.leftOnCurve()?.value ?? 0) : 0;
+    const left = this.peaked.on && rate !== null ? Math.max(level - prior.mean, CURVE_SURE * (this.leftOnCurve()?.value ?? 0)) : 0;
     if (hour > 48 && line48 && rate !== null && rate + line48.se < 2.2 && left > 7.5 && !this.stuck.on && !this.drifting.on && this.quietSinceAddition(60, 96)) {
       const end = this.hoursToEnd();
       const fg = this.expectedFg();
