@@ -69,6 +69,21 @@ describe('the calls', () => {
     expect(at(over + 2.5, stuck, { vesselL: 4.6 }).calls.neck.verdict).not.toBe('yes');
   });
 
+  it('see the peak of a late start within two days of it', () => {
+    const late = (day: number): number => cider(Math.max(0, day - 5));
+    let over = 5;
+    for (let day = 5; day < 15; day += 0.25) if (late(day) - late(day + 0.25) > late(over) - late(over + 0.25)) over = day;
+    expect(at(over + 2, record(over + 2, late)).stage).toBe('slowing');
+  });
+
+  it('say that it is slow when it falls by a point a day with much to come', () => {
+    let slow = 0;
+    while (cider(slow) > 24) slow += 0.25;
+    const crawling = (day: number): number => (day < slow ? cider(day) : 24 - (day - slow));
+    expect(at(slow + 6, record(slow + 6, crawling)).calls.stalled).toMatchObject({ verdict: 'yes', kind: 'sluggish' });
+    expect(at(slow - 1, record(slow + 6, crawling)).calls.stalled.verdict).toBe('no');
+  });
+
   it('do not call it finished or ready to rack while sugar that went in at rest lies still', () => {
     const events: BatchEvent[] = [{ at: PITCH + 30 * DAY, kind: 'addition', sugarG: 60 }];
     const sweet = (day: number): number => (day < 30 ? cider(day) : cider(day) + 5.2);
