@@ -9,6 +9,7 @@ import * as sensorsAndData from './migrations/0007-sensors-and-data';
 import * as messages from './migrations/0008-messages';
 import * as rooms from './migrations/0009-rooms';
 import * as archiveAndWebhooks from './migrations/0010-archive-and-webhooks';
+import * as indexes from './migrations/0011-indexes';
 import type { Migration, Run } from './migrations/types';
 
 /** In order. A migration that has landed is never edited; the next one mends it. */
@@ -22,6 +23,7 @@ const MIGRATIONS: ReadonlyArray<{ name: string; migration: Migration }> = [
   { name: '0008-messages', migration: messages },
   { name: '0009-rooms', migration: rooms },
   { name: '0010-archive-and-webhooks', migration: archiveAndWebhooks },
+  { name: '0011-indexes', migration: indexes },
 ];
 
 /** Held while migrating, so that several processes that start together do it once. */

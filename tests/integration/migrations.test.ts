@@ -1,3 +1,4 @@
+import { QueryTypes } from 'sequelize';
 import { expect, it } from 'vitest';
 import { migrate, migrator } from '@/db/migrate';
 import { Batch, Cellar, Entry, Membership, Person, Sensor } from '@/db/models';
@@ -32,4 +33,19 @@ it('goes down and up again on a database with data in it', async () => {
 it('migrates once when several processes start together', async () => {
   const ran = await Promise.all([migrate(db.sequelize), migrate(db.sequelize)]);
   expect(ran.flat()).toHaveLength(0);
+});
+
+it.each([
+  ['the trail of a cellar', `select id from audit a where a.cellar_id = '00000000-0000-0000-0000-000000000000' order by a.id desc limit 50`, 'audit_cellar_newest'],
+  ['what one person did to their account', `select id from audit a where a.cellar_id is null and a.person_id = '00000000-0000-0000-0000-000000000000' order by a.id desc limit 50`, 'audit_person_newest'],
+  ['the alerts of a cellar', `select id from alerts a where a.cellar_id = '00000000-0000-0000-0000-000000000000' order by a.opened_at desc, a.id desc limit 50`, 'alerts_cellar_newest'],
+  ['the test messages of a person', `select id from outbox where person_id = '00000000-0000-0000-0000-000000000000' and created_at > now() - interval '10 minutes'`, 'outbox_person_newest'],
+])('reads %s in order, from an index', async (_what, sql, index) => {
+  const plan = await db.sequelize.transaction(async (transaction) => {
+    // The tables are empty here; only what an index cannot do is left to a scan or a sort.
+    await db.sequelize.query('set local enable_seqscan = off; set local enable_bitmapscan = off', { transaction });
+    return JSON.stringify(await db.sequelize.query(`explain ${sql}`, { transaction, type: QueryTypes.SELECT }));
+  });
+  expect(plan).toContain(index);
+  expect(plan).not.toContain('Sort');
 });
