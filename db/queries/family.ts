@@ -38,3 +38,15 @@ export function linksInto(cellarId: string, batchId: string, transaction?: Trans
     { bind: { cellarId, batchId }, type: QueryTypes.SELECT, transaction },
   );
 }
+
+/** The batches that one split made, by the first line that it wrote: all its lines bear the time of its transaction. */
+export async function partsOfSplit(firstEntryId: string, transaction: Transaction): Promise<string[]> {
+  const rows = await database().query<{ id: string }>(
+    `select b.id from entries first
+     join entries line on line.batch_id = first.batch_id and line.kind = 'split' and line.created_at = first.created_at
+     join batches b on b.id = (line.detail->>'batch_id')::uuid
+     where first.id = $firstEntryId order by b.name, b.id`,
+    { bind: { firstEntryId }, type: QueryTypes.SELECT, transaction },
+  );
+  return rows.map((row) => row.id);
+}

@@ -143,6 +143,20 @@ describe('drink that moves between vessels', () => {
     expect((await Batch.findByPk(foreign.id))?.volumeL).toBe(4.5);
   });
 
+  it('is split once however often it is sent, and tells of every part each time', async () => {
+    const brewer = await buildMember('brewer');
+    const batch = await ciderAt(brewer);
+    const split = (names: string[]) => splitForm.parse({ at, client_id: crypto.randomUUID(), parts: names.map((name) => ({ name, volume_l: 1, vessel_l: 2 })) });
+    // Another split in the same minute has parts of its own.
+    await splitBatch(brewer, batch.id, split(['Dry']), clock);
+    const form = split(['Quince', 'Ash']);
+    const first = await splitBatch(brewer, batch.id, form, clock);
+    const again = await splitBatch(brewer, batch.id, form, clock);
+    expect(first.parts.map(({ name }) => name)).toEqual(['Quince', 'Ash']);
+    expect(again.parts.map(({ id }) => id).toSorted()).toEqual(first.parts.map(({ id }) => id).toSorted());
+    expect(again.batch.volume_l).toBeCloseTo(1.5, 9);
+  });
+
   it('leaves lines in the log that cannot be taken back alone, since other batches rest on them', async () => {
     const brewer = await buildMember('brewer');
     const batch = await ciderAt(brewer);

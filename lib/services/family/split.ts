@@ -1,5 +1,6 @@
 import { inTransaction } from '@/db/client';
 import { Batch, Entry } from '@/db/models';
+import { partsOfSplit } from '@/db/queries/family';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
@@ -10,7 +11,6 @@ import { auditBy } from '../audit/write';
 import { getBatch } from '../batches/get';
 import { loadBatch } from '../batches/load';
 import { notifyChange } from '../changes';
-import { detailOf } from '../drink/ledger';
 import { drinkState } from '../drink/state';
 import { notAhead } from '../not-ahead';
 import { lessen, link, pourOut, sentBefore } from './flow';
@@ -25,9 +25,8 @@ export async function splitBatch(actor: Actor, batchId: string, input: SplitForm
     const batch = await loadBatch(actor.cellarId, batchId, transaction);
     const known = await sentBefore(actor.cellarId, input.client_id, transaction);
     if (known) {
-      const first = detailOf(known).batch_id;
-      if (known.batchId !== batchId || !first) throw new ConflictError('This was sent for another batch.');
-      return { batch: await getBatch(actor, batchId, transaction), parts: [await getBatch(actor, first, transaction)] };
+      if (known.batchId !== batchId || known.kind !== 'split') throw new ConflictError('This was sent for another batch.');
+      return { batch: await getBatch(actor, batchId, transaction), parts: await presentAll(actor, await partsOfSplit(known.id, transaction), transaction) };
     }
     const wanted = input.parts.reduce((sum, part) => sum + part.volume_l, 0) + input.lost_l;
     if (wanted > batch.volumeL + SLACK_L) throw new InvalidError('There is not that much in it.', { parts: [`${wanted.toFixed(2)} L from ${batch.volumeL} L`] });
@@ -72,12 +71,12 @@ export async function splitBatch(actor: Actor, batchId: string, input: SplitForm
     }
     if (input.lost_l > 0 && batch.state !== 'ended') await lessen(batch, input.lost_l, at, transaction);
     await auditBy(actor, 'batch.split', batchId, { into: parts.map((part) => part.id), lost: input.lost_l }, transaction);
-    return { batch: await getBatch(actor, batchId, transaction), parts: await presentAll(actor, parts, transaction) };
+    return { batch: await getBatch(actor, batchId, transaction), parts: await presentAll(actor, parts.map((part) => part.id), transaction) };
   });
 }
 
-async function presentAll(actor: Actor, batches: readonly Batch[], transaction: Parameters<typeof getBatch>[2]) {
+async function presentAll(actor: Actor, ids: readonly string[], transaction: Parameters<typeof getBatch>[2]) {
   const bodies = [];
-  for (const batch of batches) bodies.push(await getBatch(actor, batch.id, transaction));
+  for (const id of ids) bodies.push(await getBatch(actor, id, transaction));
   return bodies;
 }
