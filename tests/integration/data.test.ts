@@ -34,6 +34,18 @@ const count = async (what: string) => (await db.sequelize.query<{ n: number }>(`
 const CSV = ['when;SG;temp', '2026-03-01 06:00;1,050;18,5', '2026-03-01 07:00;1,049;18,6', 'never;1,048;18', '2026-03-01 08:00;9;18'].join('\n');
 
 describe('a log file', () => {
+  it('is kept also where as many come at once as the house has connections, each into a month of its own', async () => {
+    const actor = await buildMember('brewer');
+    const forms = await Promise.all(
+      Array.from({ length: 10 }, async (_, month) => {
+        const batch = await buildBatch({ cellarId: actor.cellarId });
+        return importForm.parse({ kind: 'readings', file_name: 'old.csv', text: `when;SG;temp\n2019-${String(month + 1).padStart(2, '0')}-03 06:00;1,050;18,5`, batch_id: batch.id, columns: { at: 0, gravity: 1, temperature: 2, battery: null, signal: null } });
+      }),
+    );
+    const kept = await Promise.all(forms.map((form) => keepImport(actor, form, clock)));
+    expect(kept.map(({ counts }) => counts.readings)).toEqual(Array(10).fill(1));
+  });
+
   it('is looked at without anything being kept', async () => {
     const actor = await buildMember('brewer');
     const before = [await count('readings'), await count('sensors'), await count('imports')];

@@ -38,18 +38,35 @@ const asRow = (now: number) => ({ at, gravity, temperature, battery, signal }: I
   calibration: null,
 });
 
-async function keepReadings(actor: Actor, form: Extract<ImportForm, { kind: 'readings' }>, timeZone: string, now: number, transaction: Transaction) {
-  const batch = await loadBatch(actor.cellarId, form.batch_id, transaction);
+/** What keeps a file, in the transaction of its import. */
+type Keep = (transaction: Transaction) => Promise<{ counts: Record<string, number>; touched: string[]; sensorId?: number; batchId?: string }>;
+
+/** The months' tables are made first, each in a moment of its own: within the import they would take a second connection, and it might wait for one that another import holds. */
+async function keepReadings(actor: Actor, form: Extract<ImportForm, { kind: 'readings' }>, timeZone: string, now: number): Promise<Keep> {
+  await loadBatch(actor.cellarId, form.batch_id);
   const { good, errors } = readReadings(form, timeZone, now);
   const readings = good.map(({ value }) => value);
   if (readings.length === 0) throw nothing();
   const [from, to] = readings.reduce(([low, high], { at }) => [Math.min(low, at), Math.max(high, at)], [Infinity, -Infinity]);
   await ensureMonths(readings.map(({ at }) => at), now);
-  const { sensorId, stored } = await importedFloat(batch, { name: `from ${form.file_name}`.slice(0, 60), from: new Date(from), to: new Date(to + 1) }, readings.map(asRow(now)), transaction);
-  return { counts: { readings: stored, doubled: readings.length - stored, refused: errors.length }, sensorId, batchId: batch.id, touched: [batch.id] };
+  return async (transaction) => {
+    const batch = await loadBatch(actor.cellarId, form.batch_id, transaction);
+    const { sensorId, stored } = await importedFloat(batch, { name: `from ${form.file_name}`.slice(0, 60), from: new Date(from), to: new Date(to + 1) }, readings.map(asRow(now)), transaction);
+    return { counts: { readings: stored, doubled: readings.length - stored, refused: errors.length }, sensorId, batchId: batch.id, touched: [batch.id] };
+  };
 }
 
-async function keepBatch(actor: Actor, importId: string, batch: ImportedBatch, transaction: Transaction): Promise<string> {
+function keepBatches(actor: Actor, importId: string, form: Extract<ImportForm, { kind: 'batches' }>, timeZone: string, now: number): Keep {
+  const { good, errors } = readBatches(form, timeZone, now);
+  if (good.length === 0) throw nothing();
+  return async (transaction) => {
+    const touched: string[] = [];
+    for (const { value } of good) touched.push(await keepBatch(actor, importId, value, now, transaction));
+    return { counts: { batches: good.length, refused: errors.length }, touched };
+  };
+}
+
+async function keepBatch(actor: Actor, importId: string, batch: ImportedBatch, now: number, transaction: Transaction): Promise<string> {
   const row = await Batch.create(
     {
       cellarId: actor.cellarId,
@@ -74,7 +91,7 @@ async function keepBatch(actor: Actor, importId: string, batch: ImportedBatch, t
   if (batch.pitchedAt !== null) await entry('pitch', batch.pitchedAt, { gravity: batch.originalGravity, gravityRead: batch.originalGravity, volumeL: batch.volumeL });
   const end = batch.endedAt ?? batch.pitchedAt;
   if (batch.finalGravity !== null && end !== null) await entry('reading', end, { gravity: batch.finalGravity, gravityRead: batch.finalGravity });
-  if (batch.notes !== null) await entry('note', end ?? Date.now(), { text: batch.notes });
+  if (batch.notes !== null) await entry('note', end ?? now, { text: batch.notes });
   return row.id;
 }
 
@@ -93,22 +110,11 @@ export async function keepImport(actor: Actor, form: ImportForm, clock: Clock = 
   const { timeZone } = await Cellar.findByPk(actor.cellarId, { rejectOnEmpty: true });
   const id = randomUUID();
   if (form.kind === 'archive') return alone(() => keepArchive(actor, id, form, now));
+  const keep = form.kind === 'readings' ? await keepReadings(actor, form, timeZone, now) : keepBatches(actor, id, form, timeZone, now);
   return inTransaction(async (transaction) => {
     const run = await ImportRun.create({ id, cellarId: actor.cellarId, kind: form.kind, fileName: form.file_name, counts: {}, createdBy: actor.personId, createdAt: new Date(now) }, { transaction });
-    let counts: Record<string, number>;
-    let touched: string[] = [];
-    let into: { sensorId: number; batchId: string } | null = null;
-    if (form.kind === 'readings') {
-      const kept = await keepReadings(actor, form, timeZone, now, transaction);
-      ({ counts, touched } = kept);
-      into = { sensorId: kept.sensorId, batchId: kept.batchId };
-    } else {
-      const { good, errors } = readBatches(form, timeZone, now);
-      if (good.length === 0) throw nothing();
-      for (const { value } of good) touched.push(await keepBatch(actor, id, value, transaction));
-      counts = { batches: good.length, refused: errors.length };
-    }
-    await run.update({ counts, ...into }, { transaction });
+    const { touched, ...kept } = await keep(transaction);
+    await run.update(kept, { transaction });
     return finish(actor, run, touched, transaction);
   });
 }
