@@ -1,8 +1,9 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import type { Range } from '@/lib/core/units/range';
 import type { DrinkKind } from '@/lib/core/types';
+import { wallTime } from '@/lib/core/units/zone';
 import { database } from '../client';
-import type { Lot } from '../models';
+import { Cellar, type Lot } from '../models';
 
 export interface TastingFigures {
   look: number | null;
@@ -124,9 +125,10 @@ export async function codeTaken(cellarId: string, code: string, transaction: Tra
   return rows.length > 0;
 }
 
-/** The next code of the year: `26-041`. */
+/** The next code of the year that the cellar's calendar shows: `26-041`. */
 export async function nextCode(cellarId: string, at: Date, transaction?: Transaction): Promise<string> {
-  const year = String(at.getUTCFullYear() % 100).padStart(2, '0');
+  const { timeZone } = await Cellar.findByPk(cellarId, { attributes: ['timeZone'], rejectOnEmpty: true, transaction });
+  const year = String(wallTime(at.getTime() / 1000, timeZone).year % 100).padStart(2, '0');
   const [row] = await database().query<{ last: number }>(
     `select coalesce(max(substring(code from '^\\d\\d-(\\d{1,6})$')::int), 0) as last from lots where cellar_id = $cellarId and code ~ ('^' || $year || '-\\d{1,6}$')`,
     { bind: { cellarId, year }, type: QueryTypes.SELECT, transaction },
