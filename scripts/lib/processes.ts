@@ -1,5 +1,5 @@
 import { spawn, type ChildProcess } from 'node:child_process';
-import { closeSync, mkdirSync, openSync } from 'node:fs';
+import { closeSync, mkdirSync, openSync, renameSync, statSync } from 'node:fs';
 import { join } from 'node:path';
 
 export interface Part {
@@ -11,6 +11,7 @@ export interface Part {
 
 const FIRST_RESTART_MS = 1_000;
 const LONGEST_RESTART_MS = 30_000;
+const LARGE_LOG_BYTES = 10_000_000;
 const STOP_WITHIN_MS = 10_000;
 
 /**
@@ -35,7 +36,9 @@ export class Processes {
   }
 
   private launch(part: Part, restartMs: number): void {
-    const out = openSync(join(this.logFolder, `${part.name}.log`), 'a');
+    const log = join(this.logFolder, `${part.name}.log`);
+    setAside(log);
+    const out = openSync(log, 'a');
     const began = Date.now();
     const child = spawn(process.execPath, part.args, { env: { ...process.env, ...part.env }, stdio: ['ignore', out, out], detached: true });
     // The child has its own; one kept here for each restart would run out in a night of them.
@@ -47,7 +50,7 @@ export class Processes {
       if (this.stopping) return;
       // One that ran for a while starts again at once; one that dies at its start waits longer each time.
       const wait = Date.now() - began > 60_000 ? FIRST_RESTART_MS : restartMs;
-      this.say(`${part.name} ended (${signal ?? code}); starting it again in ${Math.round(wait / 1000)} s. Its log: ${join(this.logFolder, `${part.name}.log`)}`);
+      this.say(`${part.name} ended (${signal ?? code}); starting it again in ${Math.round(wait / 1000)} s. Its log: ${log}`);
       setTimeout(() => {
         if (!this.stopping) this.launch(part, Math.min(wait * 2, LONGEST_RESTART_MS));
       }, wait);
@@ -68,6 +71,12 @@ export class Processes {
       clearTimeout(timer);
     }
   }
+}
+
+/** A part that starts begins a new log where its last one has grown large; the one before stays beside it. While it runs its log is left alone. */
+function setAside(log: string): void {
+  const size = statSync(log, { throwIfNoEntry: false })?.size ?? 0;
+  if (size > LARGE_LOG_BYTES) renameSync(log, `${log}.1`);
 }
 
 function signalGroup(group: number, signal: NodeJS.Signals): void {

@@ -1,4 +1,4 @@
-import { mkdtempSync, readdirSync, readFileSync, readlinkSync, rmSync } from 'node:fs';
+import { mkdtempSync, readdirSync, readFileSync, readlinkSync, rmSync, statSync, truncateSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, describe, expect, it } from 'vitest';
@@ -26,5 +26,18 @@ describe('the parts of the house', () => {
     await processes.stop();
     expect(said[0]).toContain('faint ended (3); starting it again in 1 s.');
     expect(openLogs()).toEqual([]);
+  });
+
+  it('begin a new log where their last one has grown large, and keep that one alone beside it', async () => {
+    const log = join(folder, 'talker.log');
+    writeFileSync(`${log}.1`, 'from long ago');
+    writeFileSync(log, '');
+    truncateSync(log, 10_000_001);
+    const processes = new Processes(folder, () => undefined);
+    processes.start({ name: 'talker', args: ['-e', 'console.log("awake"); setInterval(() => undefined, 1000)'] });
+    await until('a new log', () => readFileSync(log, 'utf8') === 'awake\n');
+    await processes.stop();
+    expect(statSync(`${log}.1`).size).toBe(10_000_001);
+    expect(readdirSync(folder).filter((name) => name.startsWith('talker'))).toHaveLength(2);
   });
 });
