@@ -1,6 +1,6 @@
-import type { Estimate, Evidence, Instant } from '../types';
+import type { Estimate, Instant } from '../types';
 import type { Watch } from '../stages/watch';
-import { evidence, whenWords } from './words';
+import { whenWords } from './words';
 
 /** What the calls of one moment have in common. */
 export interface Scene {
@@ -26,14 +26,3 @@ export const when = (scene: Scene, at: Instant): string => whenWords(at, scene.a
 
 /** The instant so many hours from now. */
 export const later = (scene: Scene, hours: number): Instant => scene.at + Math.round(hours * 3_600_000);
-
-export function rateEvidence(scene: Scene, threshold: number | null): Evidence[] {
-  return scene.rate ? [evidence('fall', scene.rate.value, threshold, 'points/d')] : [];
-}
-
-/** Words for a float that gives nothing to go by now. */
-export function blindness(scene: Scene): string | null {
-  if (scene.silentH === null) return 'No reading yet.';
-  if (scene.watch.frozen) return 'The float is stuck; its figures say nothing.';
-  return null;
-}
