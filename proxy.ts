@@ -2,6 +2,7 @@ import { randomBytes } from 'node:crypto';
 import { NextResponse, type NextRequest } from 'next/server';
 import { sessionCookie } from './lib/auth/cookies';
 import { env } from './lib/config/env';
+import { wrongMethod } from './lib/http/methods';
 
 /** Pages that people see before they have signed in. */
 const OPEN = /^\/(sign-in|share|take|invitation|mail-address)(\/|$)/;
@@ -29,7 +30,7 @@ function contentSecurityPolicy(nonce: string): string {
   ].join('; ');
 }
 
-function secured(response: NextResponse): NextResponse {
+function secured<R extends Response>(response: R): R {
   response.headers.set('x-content-type-options', 'nosniff');
   response.headers.set('referrer-policy', 'strict-origin-when-cross-origin');
   response.headers.set('x-frame-options', 'DENY');
@@ -41,10 +42,10 @@ function secured(response: NextResponse): NextResponse {
 }
 
 /** Headers for every answer, and the way to the sign-in page for those without a session. Whether the session holds, each page and route asks the database. */
-export function proxy(request: NextRequest): NextResponse {
+export function proxy(request: NextRequest): Response {
   const { pathname, search } = request.nextUrl;
   if (pathname.startsWith('/api/')) {
-    const response = secured(NextResponse.next());
+    const response = secured(wrongMethod({ method: request.method, pathname }) ?? NextResponse.next());
     // A printed sheet is shown inside our own page; nothing else of the API is ever framed.
     const sheet = pathname.endsWith('.pdf');
     if (sheet) response.headers.set('x-frame-options', 'SAMEORIGIN');

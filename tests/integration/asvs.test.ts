@@ -102,7 +102,7 @@ describe('OWASP ASVS 5.0.0', () => {
     for (const headers of [{ 'sec-fetch-site': 'cross-site' }, { 'sec-fetch-site': 'same-site' }, { 'sec-fetch-site': 'none' }, { origin: 'https://evil.example' }, {}]) expect(await patch(headers as Record<string, string>)).toBe(403);
     // A form of another site can send text/plain without asking first.
     expect(await patch({ 'sec-fetch-site': 'same-origin', 'content-type': 'text/plain' })).toBe(415);
-    expect((await call(web, 'GET', '/api/v1/cellar/leave', { cookie })).status).toBe(405);
+    expect(await call(web, 'GET', '/api/v1/cellar/leave', { cookie })).toMatchObject({ status: 405, body: { type: 'urn:fallbright:problem:method-not-allowed' } });
     expect((await Person.findByPk(personId, { rejectOnEmpty: true })).name).not.toBe('Taken over');
   });
 

@@ -1,4 +1,4 @@
-import { problemResponse } from '@/lib/http/problem';
+import { problemResponse } from '@/lib/http/problem-response';
 
 /** Whatever the API does not have: a program that mistypes an address gets a problem document, as for all else. */
 const nowhere = (): Response => problemResponse('not-found', 'The API has no such address. /api/v1/openapi.json lists those that it has.');
