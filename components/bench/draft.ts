@@ -92,7 +92,7 @@ export function formOf(draft: BenchDraft, facts: BenchFacts): { form: BenchForm;
     warmest_since_end_c: orNull(draft.warmestSinceEnd),
     priming: primingOf(draft),
   });
-  if (!parsed.success) return { form: null, errors: Object.fromEntries(parsed.error.issues.toReversed().map((issue) => [issue.path.join('.'), issue.message.startsWith('Invalid input') ? 'must be a number' : issue.message])) };
+  if (!parsed.success) return { form: null, errors: Object.fromEntries(parsed.error.issues.toReversed().map((issue) => [issue.path.join('.'), issue.message])) };
   const form = parsed.data;
   const { vessel_l } = facts.batch;
   const volume = form.volume_l ?? facts.batch.volume_l;

@@ -1,4 +1,7 @@
 import { z } from 'zod';
+import { words } from './words';
+
+z.config({ customError: words });
 
 /** Nothing here happened before, or will after; outside PostgreSQL and JavaScript read years differently. */
 const TIMES = { from: Date.UTC(1900, 0, 1), to: Date.UTC(2200, 0, 1) };

@@ -147,7 +147,7 @@ describe('an archive', () => {
 
   it.each([
     ['no JSON', '{', /is not JSON/],
-    ['another root', '[]', /expected object/i],
+    ['another root', '[]', /must be an object/],
     ['another format', '{"format":"else","version":1}', /is no archive of this house/],
     ['another version', JSON.stringify({ format: 'fallbright-archive', version: 2, exported_at: '2026-01-01T00:00:00Z', cellar: { name: '', time_zone: '' }, batches: [] }), /another version/],
     ['deep nesting', `${'['.repeat(100_000)}${']'.repeat(100_000)}`, /./],
