@@ -2,6 +2,7 @@ import 'server-only';
 import type { NextAuthOptions, User } from 'next-auth';
 import Credentials from 'next-auth/providers/credentials';
 import type { z } from 'zod';
+import { systemClock } from '../clock';
 import { linkSignInForm, signInForm } from '../contracts/people';
 import { authSecret, env } from '../config/env';
 import { ThrottledError } from '../errors';
@@ -66,7 +67,7 @@ export function authOptions(from: SignInFrom): NextAuthOptions {
         authorize: (credentials) =>
           userOf(async () => {
             const form = signInForm.safeParse({ ...credentials, code: credentials?.code || undefined });
-            return form.success ? signIn(form.data, credentials?.stay === 'true', from, Date.now()) : refusedForm(form.error);
+            return form.success ? signIn(form.data, credentials?.stay === 'true', from, systemClock.now()) : refusedForm(form.error);
           }),
       }),
       Credentials({
@@ -76,7 +77,7 @@ export function authOptions(from: SignInFrom): NextAuthOptions {
         authorize: (credentials) =>
           userOf(async () => {
             const form = linkSignInForm.safeParse({ ...credentials, code: credentials?.code || undefined });
-            return form.success ? signInByLink(form.data, from, Date.now()) : refusedForm(form.error);
+            return form.success ? signInByLink(form.data, from, systemClock.now()) : refusedForm(form.error);
           }),
       }),
     ],

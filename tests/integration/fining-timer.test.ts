@@ -1,4 +1,6 @@
+import { Op } from 'sequelize';
 import { describe, expect, it } from 'vitest';
+import { Entry } from '@/db/models';
 import { oweMails } from '@/db/queries/outbox';
 import { inTransaction } from '@/db/client';
 import type { ManualClock } from '@/lib/clock';
@@ -63,7 +65,10 @@ describe('the clock of a two-part fining', () => {
     await dropJob(dropped.brewer, dropped.job.id, dropped.clock);
     const back = await started();
     await doJob(back.brewer, back.job.id, null, back.clock);
+    back.clock.advance(5_000);
     await undoJob(back.brewer, back.job.id, back.clock);
+    const takenBack = await Entry.findOne({ where: { cellarId: back.brewer.cellarId, removedAt: { [Op.not]: null } }, rejectOnEmpty: true });
+    expect(takenBack.removedAt?.getTime()).toBe(back.clock.now());
     const mails = await sentBy(clockAt(NOON + 2 * HOUR));
     expect(mails.map((mail) => mail.to.address)).toEqual([back.brewer.person.email]);
   });

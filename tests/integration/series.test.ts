@@ -2,6 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { database } from '@/db/client';
 import { Assignment } from '@/db/models';
+import { ManualClock } from '@/lib/clock';
 import { getSeries } from '@/lib/services/batches/get-series';
 import { NotFoundError } from '@/lib/errors';
 import { useDatabase } from '../support/database';
@@ -123,6 +124,12 @@ describe('the series of a batch', () => {
     expect(series.at).toEqual(Array.from({ length: 30 }, (_, n) => at(10 + n) / 1000));
     expect(series.gravity).toEqual([...Array(10).fill(1.05), ...Array(20).fill(1.02)]);
     expect((await getSeries(actor, other.id, { points: 100 })).count).toBe(20);
+  });
+
+  it('stands at the present where there is no reading yet', async () => {
+    const { actor, batch } = await batchWith([]);
+    const now = new Date(START + DAY_S * 1000).toISOString();
+    expect(await getSeries(actor, batch.id, { points: 100 }, new ManualClock(Date.parse(now)))).toMatchObject({ from: now, to: now, count: 0 });
   });
 
   it('cuts out a span', async () => {

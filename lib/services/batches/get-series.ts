@@ -2,6 +2,7 @@ import type { z } from 'zod';
 import { allReadings, seriesExtent, thinnedSeries, type SeriesPoint } from '@/db/queries/series';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
+import { systemClock, type Clock } from '@/lib/clock';
 import type { SeriesBody, seriesQuery } from '@/lib/contracts/batches';
 import { NotFoundError } from '@/lib/errors';
 
@@ -29,20 +30,20 @@ function body(from: number, to: number, count: number, points: readonly SeriesPo
  * that a year of readings costs the browser what a day does. All are readings
  * that were taken; the extremes and the latest are always among them.
  */
-export async function getSeries(actor: Actor, batchId: string, query: z.infer<typeof seriesQuery>): Promise<SeriesBody> {
+export async function getSeries(actor: Actor, batchId: string, query: z.infer<typeof seriesQuery>, clock: Clock = systemClock): Promise<SeriesBody> {
   authorize(actor, 'batches.read');
-  return seriesOf(actor.cellarId, batchId, query);
+  return seriesOf(actor.cellarId, batchId, query, clock);
 }
 
 /** The same for whoever was let in otherwise. */
-export async function seriesOf(cellarId: string, batchId: string, query: z.infer<typeof seriesQuery>): Promise<SeriesBody> {
+export async function seriesOf(cellarId: string, batchId: string, query: z.infer<typeof seriesQuery>, clock: Clock = systemClock): Promise<SeriesBody> {
   const from = query.from === undefined ? ALWAYS.from : seconds(query.from);
   const to = query.to === undefined ? ALWAYS.to : seconds(query.to);
   const extent = await seriesExtent(cellarId, batchId, from, to);
   if (!extent) throw new NotFoundError('batch');
   const { first, last } = extent;
   if (first === null || last === null) {
-    const now = Date.now() / 1000;
+    const now = clock.now() / 1000;
     return body(query.from === undefined ? now : from, query.to === undefined ? now : to, 0, []);
   }
 

@@ -4,6 +4,7 @@ import { findBatches } from '@/db/queries/batches';
 import { findLots } from '@/db/queries/lots';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
+import { systemClock, type Clock } from '@/lib/clock';
 import type { z } from 'zod';
 import { mean } from 'simple-statistics';
 import { Op } from 'sequelize';
@@ -23,19 +24,19 @@ const HOUR_S = 3600;
 const hoursFrom = (zero: number, seconds: number) => Number(((seconds - zero) / HOUR_S).toFixed(3));
 
 /** Batches laid over each other: hour 0 is the pitch of each. */
-export async function compareBatches(actor: Actor, query: z.infer<typeof compareQuery>): Promise<CompareBody> {
+export async function compareBatches(actor: Actor, query: z.infer<typeof compareQuery>, clock: Clock = systemClock): Promise<CompareBody> {
   authorize(actor, 'batches.read');
   const items: CompareBody['items'] = [];
-  for (const id of [...new Set(query.batches)]) items.push(await one(actor, id, query.points));
+  for (const id of [...new Set(query.batches)]) items.push(await one(actor, id, query.points, clock));
   return { items };
 }
 
-async function one(actor: Actor, id: string, points: number): Promise<CompareBody['items'][number]> {
+async function one(actor: Actor, id: string, points: number, clock: Clock): Promise<CompareBody['items'][number]> {
   const batch = await loadBatch(actor.cellarId, id);
   const [row] = await findBatches({ cellarId: actor.cellarId, id, limit: 1 });
   if (!row) throw new NotFoundError('batch');
-  const state = await drinkState(batch, batch.endedAt ?? new Date());
-  const series = await seriesOf(actor.cellarId, id, { points, ...(batch.pitchedAt && { from: iso(batch.pitchedAt) }), ...(batch.endedAt && { to: iso(batch.endedAt) }) });
+  const state = await drinkState(batch, batch.endedAt ?? new Date(clock.now()));
+  const series = await seriesOf(actor.cellarId, id, { points, ...(batch.pitchedAt && { from: iso(batch.pitchedAt) }), ...(batch.endedAt && { to: iso(batch.endedAt) }) }, clock);
   const entries = await Entry.findAll({ where: { batchId: id, removedAt: { [Op.is]: null } }, order: [['at', 'ASC']] });
   const lots = await findLots({ cellarId: actor.cellarId, batchId: id, limit: 100 });
   const zero = batch.pitchedAt ? batch.pitchedAt.getTime() / 1000 : null;
@@ -47,7 +48,7 @@ async function one(actor: Actor, id: string, points: number): Promise<CompareBod
   // Before it stands still its end is a forecast, and not a result.
   const terminalAt = assessment?.stage === 'terminal' ? assessment.terminal_at?.value : undefined;
   // What has not happened is not laid beside what has.
-  const until = (batch.endedAt?.getTime() ?? Date.now()) / 1000;
+  const until = (batch.endedAt?.getTime() ?? clock.now()) / 1000;
   const curve = (await keptCurve(id)).map((point) => ({ at: Date.parse(point.at) / 1000, gravity: point.gravity })).filter((point) => point.at <= until);
   return {
     batch: presentBatch(row, actor),

@@ -66,13 +66,13 @@ export async function giveSecond(actor: Actor, finingId: string, dose: Dose, tra
 }
 
 /** The tick of the second dose was taken back: as if it had not gone in. */
-export async function takeSecondBack(actor: Actor, finingId: string, transaction: Transaction): Promise<void> {
+export async function takeSecondBack(actor: Actor, finingId: string, now: Date, transaction: Transaction): Promise<void> {
   const run = await loadRun(actor.cellarId, finingId, transaction);
   await run.update({ secondAt: null }, { transaction });
   const entries = await Entry.findAll({ where: { batchId: run.batchId, kind: 'fining', removedAt: { [Op.is]: null } }, transaction });
   for (const entry of entries) {
     const { fining_id: id, dose } = detailOf(entry);
-    if (id === finingId && dose === 'b') await entry.update({ removedAt: new Date(), removedBy: actor.personId }, { transaction });
+    if (id === finingId && dose === 'b') await entry.update({ removedAt: now, removedBy: actor.personId }, { transaction });
   }
   await Job.destroy({ where: { finingId, kind: 'settle', doneAt: null }, transaction });
   const job = await Job.findOne({ where: { finingId, kind: 'fining_b' }, transaction });

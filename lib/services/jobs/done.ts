@@ -51,7 +51,7 @@ export async function undoJob(actor: Actor, id: string, clock: Clock = systemClo
     if (job.doneBy !== actor.personId) throw new ForbiddenError('Only who ticked it can take the tick back.');
     if (clock.now() - job.doneAt.getTime() > UNDO_S * 1000 + GRACE_MS) throw new ConflictError(`A tick can be taken back for ${UNDO_S} s. Put the job on the rounds anew.`);
     await Job.destroy({ where: { repeats: id, doneAt: null }, transaction });
-    if (job.kind === 'fining_b' && job.finingId) await takeSecondBack(actor, job.finingId, transaction);
+    if (job.kind === 'fining_b' && job.finingId) await takeSecondBack(actor, job.finingId, new Date(clock.now()), transaction);
     await job.update({ doneAt: null, doneBy: null }, { transaction });
     await auditBy(actor, 'job.undone', id, { title: job.title }, transaction);
     await notifyChange({ cellar: actor.cellarId, kind: 'job', batch: job.batchId }, transaction);

@@ -1,13 +1,14 @@
 import { Person } from '@/db/models';
 import { writtenBy } from '@/db/queries/own-data';
 import { trail } from '@/db/queries/trail';
+import { systemClock, type Clock } from '@/lib/clock';
 import { NotFoundError } from '@/lib/errors';
 import { audit } from '../audit/write';
 
 const MOST_LINES = 50_000;
 
 /** All that is kept about one person: who they are, where they belong, what they wrote, what happened to their account. No secrets. */
-export async function exportAccount(personId: string): Promise<string> {
+export async function exportAccount(personId: string, clock: Clock = systemClock): Promise<string> {
   const person = await Person.findByPk(personId);
   if (!person) throw new NotFoundError('account');
   await audit({ action: 'account.exported', subject: personId, personId, cellarId: null });
@@ -15,7 +16,7 @@ export async function exportAccount(personId: string): Promise<string> {
   return JSON.stringify(
     {
       format: 'fallbright.person/1',
-      exported_at: new Date().toISOString(),
+      exported_at: new Date(clock.now()).toISOString(),
       person: {
         id: person.id,
         name: person.name,
