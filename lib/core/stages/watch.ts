@@ -281,9 +281,11 @@ export class Watch extends Intake {
 
     const rate = line48 ? -line48.slope : null;
     let crawling = false;
-    // What is left by the yeast's range, or by the curve where that says more.
-    const left = this.peaked.on && rate !== null ? Math.max(level - prior.mean, CURVE_SURE * (this.leftOnCurve()?.value ?? 0)) : 0;
-    if (hour > 48 && line48 && rate !== null && rate + line48.se < 2.2 && left > 7.5 && !this.stuck.on && !this.drifting.on && this.quietSinceAddition(60, 96)) {
+    const slow = hour > 48 && line48 !== null && rate !== null && rate + line48.se < 2.2 && !this.stuck.on && !this.drifting.on && this.quietSinceAddition(60, 96);
+    // What is left by the yeast's range, or by the curve where that says more. What has come to its end has said so already.
+    const asked = this.peaked.on && rate !== null && (slow || this.sluggish.on);
+    const left = asked ? Math.max(level - prior.mean, this.terminal.on ? 0 : CURVE_SURE * (this.leftOnCurve()?.value ?? 0)) : 0;
+    if (slow && left > 7.5) {
       const end = this.hoursToEnd();
       const fg = this.expectedFg();
       crawling = (end !== null && end > 130) || left > 6 * Math.max(rate, 0.3) || (fg !== null && fg > this.zoneTop());
