@@ -14,13 +14,15 @@ function canBeDecoded(url: string): boolean {
 /**
  * Refuses what Next.js answers with 500 before any code of ours: TRACE, which shows
  * a request back to whoever sent it and which nobody here needs (RFC 9110, 9.3.8),
- * and addresses whose percent signs stand for no UTF-8 (RFC 3986, 2.5).
+ * and addresses whose percent signs stand for no UTF-8 (RFC 3986, 2.5). A Range is
+ * left unheard, as a server may (RFC 9110, 14.2): nothing here is long enough to want one.
  */
 export function refuseUnreadable(): void {
   const emit = Server.prototype.emit as Emit;
   const heard: Emit = function (event, ...given) {
     if (event !== 'request') return emit.call(this, event, ...given);
     const [request, response] = given as [IncomingMessage, ServerResponse];
+    delete request.headers.range;
     const trace = request.method === 'TRACE';
     if (!trace && canBeDecoded(request.url ?? '/')) return emit.call(this, event, ...given);
     response.writeHead(trace ? 405 : 400, { ...(trace && { allow: 'GET, HEAD, POST, PATCH, DELETE, OPTIONS' }), 'content-length': 0, connection: 'close' }).end();
