@@ -1,6 +1,4 @@
-import { Server, type IncomingMessage, type ServerResponse } from 'node:http';
-
-type Emit = (this: Server, event: string | symbol, ...given: unknown[]) => boolean;
+import { beforeEachRequest } from './before';
 
 function canBeDecoded(url: string): boolean {
   try {
@@ -18,15 +16,11 @@ function canBeDecoded(url: string): boolean {
  * left unheard, as a server may (RFC 9110, 14.2): nothing here is long enough to want one.
  */
 export function refuseUnreadable(): void {
-  const emit = Server.prototype.emit as Emit;
-  const heard: Emit = function (event, ...given) {
-    if (event !== 'request') return emit.call(this, event, ...given);
-    const [request, response] = given as [IncomingMessage, ServerResponse];
+  beforeEachRequest((request, response) => {
     delete request.headers.range;
     const trace = request.method === 'TRACE';
-    if (!trace && canBeDecoded(request.url ?? '/')) return emit.call(this, event, ...given);
+    if (!trace && canBeDecoded(request.url ?? '/')) return false;
     response.writeHead(trace ? 405 : 400, { ...(trace && { allow: 'GET, HEAD, POST, PATCH, DELETE, OPTIONS' }), 'content-length': 0, connection: 'close' }).end();
     return true;
-  };
-  Server.prototype.emit = heard;
+  });
 }

@@ -1,6 +1,7 @@
 import 'server-only';
 import { authSecret, env } from '../config/env';
 import { logFor } from '../log';
+import { beforeEachRequest } from './before';
 import { eventHub } from './event-hub';
 import { refuseUnreadable } from './refuse';
 
@@ -12,9 +13,17 @@ export function startServer(): void {
   shareWithNextAuth();
   refuseUnreadable();
   eventHub().begin();
-  // An open event stream would keep the server alive after it was told to stop.
-  for (const signal of ['SIGTERM', 'SIGINT'] as const) process.once(signal, () => void eventHub().stop());
+  for (const signal of ['SIGTERM', 'SIGINT'] as const) process.once(signal, endConnections);
   logFor('web').info({ url: env().PUBLIC_URL }, 'web ready');
+}
+
+/** An open event stream, or a page that comes back for one over the connection it has, would keep a server alive that was told to stop. */
+function endConnections(): void {
+  beforeEachRequest((_, response) => {
+    response.shouldKeepAlive = false;
+    return false;
+  });
+  void eventHub().stop();
 }
 
 function shareWithNextAuth(): void {

@@ -107,8 +107,10 @@ describe('what is done to a drink', () => {
     await page.getByText('Rack', { exact: true }).first().click();
     await page.getByLabel('Left on the lees and in the hose').fill('0.3');
     await page.getByLabel('What', { exact: true }).selectOption('water');
-    await page.getByLabel('How much').fill('0.4');
     const comes = page.getByRole('region', { name: 'What it comes to' }).filter({ visible: true });
+    await page.getByLabel('How much').fill('0.4');
+    await comes.getByText('Much air above it').waitFor();
+    await page.getByLabel('How much').fill('0.6');
     await comes.getByText('It fits').waitFor();
     const [, gravity, strength] = /(1\.\d{3}), (\d+\.\d %)/.exec(await comes.innerText())!;
     await page.getByRole('button', { name: 'Racked', exact: true }).click();
