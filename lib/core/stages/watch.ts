@@ -79,7 +79,7 @@ export class Watch extends Intake {
     const day = this.line(48);
     hold(this.rising, hour, day !== null && day.slope - 1.64 * day.se > 0.25, 2, day !== null && day.slope - 1.64 * day.se <= 0);
     const settled = this.quietSinceAddition(48, 240);
-    hold(this.drifting, hour, (this.rising.on || (day !== null && day.slope > 0 && this.climbs(168))) && settled && !this.segment.fruit && hour > 96, 8, !this.rising.on);
+    hold(this.drifting, hour, settled && !this.segment.fruit && hour > 96 && (this.rising.on || (day !== null && day.slope > 0 && this.climbs(168))), 8, !this.rising.on);
     if (this.lastHand && Math.abs(this.lastHand.miss) > 4 && hour - this.lastHand.hour < 168 && this.lastHand.hour > 12) {
       hold(this.drifting, hour, true, 1, false);
     }
@@ -217,19 +217,17 @@ export class Watch extends Intake {
     hold(this.terminal, hour, done, 2, (lower48 !== null && lower48 > 0.8) || this.refermenting.on);
     if (this.terminal.on && !wasDone) this.plateau = level;
 
-    const line12 = this.line(12) ?? line24;
-    const paces = [line12, line24].flatMap((line) => (line ? [-line.slope] : []));
-    let rackable = this.terminal.on;
-    if (!rackable && inside && !sugary && this.quietSinceAddition(60, 120) && Math.min(...paces) < RACK_PACE) {
-      const left = this.leftOnCurve();
-      rackable = left !== null && left.most < RACK_POINTS;
+    if (this.terminal.on) hold(this.rack, hour, true, 2, false);
+    else {
+      const line12 = this.line(12) ?? line24;
+      const paces = [line12, line24].flatMap((line) => (line ? [-line.slope] : []));
+      const asked = inside && !sugary && this.quietSinceAddition(60, 120) && Math.min(...paces) < RACK_PACE;
+      const left = asked ? this.leftOnCurve() : null;
+      hold(this.rack, hour, left !== null && left.most < RACK_POINTS, 2, line12 !== null && -line12.slope - 1.64 * line12.se > RACK_PACE);
     }
-    hold(this.rack, hour, rackable, 2, line12 !== null && -line12.slope - 1.64 * line12.se > RACK_PACE);
 
-    const line72 = this.line(72);
-    const quiet = upper48 !== null && upper48 < 0.5 && (line72 === null || -line72.slope + 1.28 * line72.se < 0.6);
     // Both ends must say so: the shorter sees a late fall, the longer is seldom deceived.
-    const rest = most !== null && most < BOTTLE_POINTS && quiet && inside ? this.longTail() : null;
+    const rest = most !== null && most < BOTTLE_POINTS && inside && upper48! < 0.5 && this.threeQuietDays() ? this.longTail() : null;
     const still =
       rest !== null &&
       level !== null &&
@@ -240,6 +238,11 @@ export class Watch extends Intake {
       !this.mayOnlyBeCold() &&
       this.quietSinceAddition(120, 168);
     hold(this.bottle, hour, still, 4, (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on);
+  }
+
+  private threeQuietDays(): boolean {
+    const line = this.line(72);
+    return line === null || -line.slope + 1.28 * line.se < 0.6;
   }
 
   /** It rests between where it should end and where it would be stuck, and has done so for days: the yeast's range was a little wrong. */
