@@ -1,7 +1,7 @@
 'use client';
 
 import { useEffect, useState } from 'react';
-import { fromLocal, toLocal } from '@/components/batch/entry-form';
+import { timeTyped, toLocal } from '@/components/batch/entry-form';
 import { litres } from '@/components/batch/figures';
 import { when } from '@/components/charts/zone';
 import { countdown } from '@/components/rounds/rows';
@@ -84,8 +84,8 @@ export function Finings({ batchId, volumeL, now, timeZone, mayDo }: { batchId: s
   const times = volumeL / USUAL_FOR_L;
 
   async function start() {
-    const firstAt = at === '' ? new Date().toISOString() : fromLocal(at, timeZone);
-    if (firstAt === null) return setFailed('Choose a day and a time.');
+    const firstAt = timeTyped(at, timeZone);
+    if (firstAt === '') return setFailed('Choose a day and a time.');
     setBusy(true);
     setFailed(null);
     try {

@@ -2,7 +2,7 @@
 
 import Link from 'next/link';
 import { useMemo, useState, type FormEvent } from 'react';
-import { fromLocal, toLocal } from '@/components/batch/entry-form';
+import { timeTyped, toLocal } from '@/components/batch/entry-form';
 import { litres, percent, typedNumber } from '@/components/batch/figures';
 import { Button } from '@/components/ui/Button';
 import { Choice } from '@/components/ui/Choice';
@@ -28,7 +28,7 @@ export function BlendForm({ batch, now, timeZone }: { batch: BatchBody; now: num
   const [where, setWhere] = useState<'new' | 'there'>('new');
   const [intoId, setIntoId] = useState('');
   const [vessel, setVessel] = useState(() => newVessel(`${batch.name}, blended`.slice(0, 80)));
-  const [at, setAt] = useState(() => toLocal(now, timeZone));
+  const [at, setAt] = useState('');
   const [text, setText] = useState('');
   const [clientId] = useState(() => crypto.randomUUID());
   const { errors, failed, sending, answer, submit } = useSend(blendForm, blendBatches, (path) => ['at', 'into_batch_id'].includes(path) || showsVessel(path, 'into') || /^parts\.\d+\./.test(path));
@@ -61,7 +61,7 @@ export function BlendForm({ batch, now, timeZone }: { batch: BatchBody; now: num
   function send(event: FormEvent) {
     event.preventDefault();
     void submit({
-      at: fromLocal(at, timeZone) ?? '',
+      at: timeTyped(at, timeZone),
       text: text.trim() || null,
       client_id: clientId,
       parts: parts.map((part) => ({ batch_id: part.batchId, volume_l: typedNumber(part.litres) ?? NaN })),
@@ -118,7 +118,7 @@ export function BlendForm({ batch, now, timeZone }: { batch: BatchBody; now: num
         </div>
       )}
       <p className="type-reason text-ink2">Sugar of one and yeast of the other can begin again. Leave room, keep an airlock on it, and read it by hand before it goes near a bottle.</p>
-      <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={at} onChange={(event) => setAt(event.target.value)} error={errors.at} />
+      <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={at} onChange={(event) => setAt(event.target.value)} hint="Empty: now." error={errors.at} />
       <Field label="Note" autoComplete="off" maxLength={2000} value={text} onChange={(event) => setText(event.target.value)} />
       {failed && <FormError>{failed}</FormError>}
       <Button look="first" type="submit" className="self-end" disabled={sending}>

@@ -1,7 +1,7 @@
 'use client';
 
 import { useState, type FormEvent } from 'react';
-import { fromLocal, toLocal } from '@/components/batch/entry-form';
+import { timeTyped, toLocal } from '@/components/batch/entry-form';
 import { litres, points, typedGravity, typedNumber } from '@/components/batch/figures';
 import { NECK_WORDS } from '@/components/batch/words';
 import { Button } from '@/components/ui/Button';
@@ -54,7 +54,7 @@ const fieldOf = (path: string): string => FIELD_OF[path] ?? (/top_up(\.\d+)?\.vo
 export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rack: boolean; now: number; timeZone: string }) {
   const { batches } = useBatches({ state: 'working' });
   const { drink } = useDrink(batch.id);
-  const [draft, setDraft] = useState({ left: '', vessel: '', tag: '', place: '', neck: '', sulphite: '', what: (rack ? '' : 'water') as What, topUp: '', gravity: '', original: '', from: '', at: toLocal(now, timeZone), text: '' });
+  const [draft, setDraft] = useState({ left: '', vessel: '', tag: '', place: '', neck: '', sulphite: '', what: (rack ? '' : 'water') as What, topUp: '', gravity: '', original: '', from: '', at: '', text: '' });
   const [errors, setErrors] = useState<Record<string, string>>({});
   const [failed, setFailed] = useState<string | null>(null);
   const [sending, setSending] = useState(false);
@@ -76,7 +76,7 @@ export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rac
     const number = (text: string) => typedNumber(text);
     const words = (text: string) => (text.trim() === '' ? null : text.trim());
     const topUp = draft.what === '' ? null : { what: draft.what, volume_l: number(draft.topUp) ?? NaN, gravity: typedGravity(draft.gravity), original_gravity: typedGravity(draft.original), batch_id: words(draft.from) };
-    const base = { at: fromLocal(draft.at, timeZone) ?? '', text: words(draft.text), client_id: clientId };
+    const base = { at: timeTyped(draft.at, timeZone), text: words(draft.text), client_id: clientId };
     const vessel = {
       ...(draft.vessel.trim() === '' ? {} : { vessel_l: number(draft.vessel) ?? NaN }),
       ...(draft.tag.trim() === '' ? {} : { tag: number(draft.tag) }),
@@ -168,7 +168,7 @@ export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rac
             <p className="type-reason text-ink2">Keep air out: a full vessel and a hose that reaches the bottom. Lift a full glass vessel with both hands, one under it, never by its neck; nothing hot into cold glass.</p>
           </>
         )}
-        <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={draft.at} onChange={set('at')} error={errors.at} />
+        <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={draft.at} onChange={set('at')} hint="Empty: now." error={errors.at} />
         <Field label="Note" autoComplete="off" maxLength={2000} value={draft.text} onChange={set('text')} />
         {failed && <FormError>{failed}</FormError>}
         <div className="wide:hidden">{comes}</div>

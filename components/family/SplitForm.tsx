@@ -2,7 +2,7 @@
 
 import Link from 'next/link';
 import { useState, type FormEvent } from 'react';
-import { fromLocal, toLocal } from '@/components/batch/entry-form';
+import { timeTyped, toLocal } from '@/components/batch/entry-form';
 import { litres, typedNumber } from '@/components/batch/figures';
 import { Button } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
@@ -28,7 +28,7 @@ const numberOr = (text: string, other: number) => typedNumber(text) ?? other;
 export function SplitForm({ batch, now, timeZone }: { batch: BatchBody; now: number; timeZone: string }) {
   const [parts, setParts] = useState<PartDraft[]>(() => [{ key: 1, litres: '', vessel: newVessel(`${batch.name}, second vessel`.slice(0, 80)) }]);
   const [lost, setLost] = useState('');
-  const [at, setAt] = useState(() => toLocal(now, timeZone));
+  const [at, setAt] = useState('');
   const [text, setText] = useState('');
   const [clientId] = useState(() => crypto.randomUUID());
   const { errors, failed, sending, answer, submit } = useSend(
@@ -60,7 +60,7 @@ export function SplitForm({ batch, now, timeZone }: { batch: BatchBody; now: num
   const change = (key: number, part: Partial<PartDraft>) => setParts((before) => before.map((item) => (item.key === key ? { ...item, ...part } : item)));
   function send(event: FormEvent) {
     event.preventDefault();
-    void submit({ at: fromLocal(at, timeZone) ?? '', text: text.trim() || null, client_id: clientId, lost_l: numberOr(lost, 0), parts: parts.map((part) => ({ ...vesselBody(part.vessel), volume_l: numberOr(part.litres, NaN) })) });
+    void submit({ at: timeTyped(at, timeZone), text: text.trim() || null, client_id: clientId, lost_l: numberOr(lost, 0), parts: parts.map((part) => ({ ...vesselBody(part.vessel), volume_l: numberOr(part.litres, NaN) })) });
   }
 
   return (
@@ -89,7 +89,7 @@ export function SplitForm({ batch, now, timeZone }: { batch: BatchBody; now: num
         </p>
       )}
       <p className="type-reason text-ink2">Each part keeps the pitch, the yeast and the original gravity it comes with, and is read by hand until it has a sensor of its own. Each must be read anew before its bench says anything.</p>
-      <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={at} onChange={(event) => setAt(event.target.value)} error={errors.at} />
+      <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={at} onChange={(event) => setAt(event.target.value)} hint="Empty: now." error={errors.at} />
       <Field label="Note" autoComplete="off" maxLength={2000} value={text} onChange={(event) => setText(event.target.value)} />
       {failed && <FormError>{failed}</FormError>}
       <Button look="first" type="submit" className="self-end" disabled={sending}>

@@ -1,7 +1,7 @@
 'use client';
 
 import type { Action } from '@/lib/core/actions';
-import { USUAL_UNITS, type ChosenUnits } from '@/lib/core/units/chosen';
+import type { ChosenUnits } from '@/lib/core/units/chosen';
 import { useBatches } from '@/lib/client/batches';
 import { useMe } from '@/lib/client/me';
 
@@ -20,7 +20,8 @@ export interface CellarGlance {
   may: (action: Action) => boolean;
 }
 
-export function useGlance(): CellarGlance {
+/** `units` are the person's as the server knew them: until the page has asked for itself, they hold. */
+export function useGlance(units: ChosenUnits): CellarGlance {
   const { me, may } = useMe();
   const { batches } = useBatches({ state: 'working' });
   const heard = (batches ?? []).flatMap((batch) => (batch.sensor?.last_heard_at ? [Date.parse(batch.sensor.last_heard_at) / 1000] : []));
@@ -32,7 +33,7 @@ export function useGlance(): CellarGlance {
     timeZone: me?.cellar.time_zone ?? 'UTC',
     vessels: batches?.length ?? null,
     heardAt: heard.length > 0 ? Math.max(...heard) : null,
-    units: me?.person.units ?? USUAL_UNITS,
+    units: me?.person.units ?? units,
     may,
   };
 }
