@@ -14,7 +14,7 @@ export function FirstMessage({ sensorId, since }: { sensorId: string; since: num
   const { me } = useMe();
   const now = (useNow() ?? since) / 1000;
   const { data } = useRawReadings(sensorId, 5, ASK_EVERY_MS);
-  const { refusals } = useRefusals(sensorId);
+  const { refusals } = useRefusals(sensorId, ASK_EVERY_MS);
   const timeZone = me?.cellar.time_zone ?? 'UTC';
   const heard = data?.items.find((reading) => Date.parse(reading.received_at) >= since);
   const refused = refusals?.find((refusal) => Date.parse(refusal.received_at) >= since);

@@ -16,9 +16,9 @@ export function useSensor(id: string | null) {
   return { sensor: data, ...rest };
 }
 
-/** What the sensor sent that was not taken, and why, newest first. */
-export function useRefusals(sensorId: string | null) {
-  const { data, ...rest } = useResource<z.infer<typeof refusedList>>(sensorId && `/sensors/${sensorId}/refusals`);
+/** What the sensor sent that was not taken, and why, newest first; asked for again every so often where somebody waits for it. */
+export function useRefusals(sensorId: string | null, everyMs = 0) {
+  const { data, ...rest } = useResource<z.infer<typeof refusedList>>(sensorId && `/sensors/${sensorId}/refusals`, { refreshInterval: everyMs });
   return { refusals: data?.items, ...rest };
 }
 

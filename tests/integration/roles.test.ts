@@ -2,19 +2,17 @@ import { randomUUID } from 'node:crypto';
 import { readdirSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { Alert, Batch, Entry, SignIn } from '@/db/models';
+import { Batch, Entry } from '@/db/models';
 import { endpoints, type Endpoint, type EndpointName } from '@/lib/contracts/endpoints';
 import type { Role } from '@/lib/core/roles';
-import type { Call } from '@/lib/core/types';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildCellar, buildEntry, buildMember, buildSensor } from '../support/factories';
 import { jobRows } from '../support/job-rows';
 import { dataRows } from '../support/data-rows';
-import { dataThings } from '../support/data-things';
-import { jobThings } from '../support/job-things';
-import { messageRows, messageThings } from '../support/message-rows';
-import { buildToken, peopleRows, peopleThings } from '../support/people-rows';
+import { messageRows } from '../support/message-rows';
+import { buildToken, peopleRows } from '../support/people-rows';
 import { EVERYBODY, SHELF_SPAN, watchRows, type RoleRow, type Things } from '../support/role-rows';
+import { things } from '../support/things';
 import { call, sessionCookie, startWeb, type Web } from '../support/web';
 
 const ROUTES = join(import.meta.dirname, '../../app/api/v1');
@@ -24,18 +22,6 @@ const TABLE: Partial<Record<EndpointName, RoleRow>> = { ...watchRows, ...jobRows
 
 /** Tested where they are at home: by a sensor's credential, in the open, by an address or a secret that is the key, by a code of an authenticator, as a stream. */
 const ELSEWHERE = new Set<string>(['postTelemetry', 'getOpenApi', 'streamEvents', 'readCalendar', 'getShared', 'tasteShared', 'getTakeLink', 'useTakeLink', 'lookAtInvitation', 'joinByInvitation', 'askForSignInLink', 'askForPassphraseLink', 'resetPassphrase', 'confirmMail', 'confirmSecondFactor', 'endSecondFactor', 'renewRecoveryCodes', 'keepPhoto', 'openPhoto', 'getArchiveSchema'] satisfies EndpointName[]);
-
-const EVIDENCE: Call = { verdict: 'yes', kind: 'stuck', since: 0, expectedAt: null, headline: 'Warm it.', reason: 'No fall.', act: null, changesIt: null, evidence: [] };
-
-async function things(cellarId: string, personId: string): Promise<Things> {
-  const batch = await buildBatch({ cellarId, pitchedAt: new Date(Date.now() - 86_400_000) });
-  const other = await buildMember('brewer', { cellarId });
-  const entry = await buildEntry(batch, { text: 'x', personId: other.personId });
-  const { sensor } = await buildSensor({ batch });
-  const alert = await Alert.create({ cellarId, batchId: batch.id, call: 'stalled', kind: 'stuck', level: 'check', state: 'open', since: new Date(), openedAt: new Date(), evidence: EVIDENCE });
-  const signIn = await SignIn.create({ personId, expiresAt: new Date(Date.now() + 3_600_000) });
-  return { batchId: batch.id, entryId: entry.id, sensorId: sensor.identifier, alertId: alert.id, signInId: signIn.id, cellarId, ...(await peopleThings(cellarId, personId)), ...(await messageThings({ cellarId, batchId: batch.id, personId, signInId: signIn.id })), ...(await jobThings({ ...other, role: 'brewer' }, personId)), ...(await dataThings({ ...other, role: 'brewer' })) };
-}
 
 describe('who may do what', () => {
   const db = useDatabase();
