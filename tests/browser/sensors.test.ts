@@ -65,6 +65,7 @@ describe('a new sensor', () => {
     await first.getByText('68.0 °F').waitFor();
     await sound(page);
     await page.getByRole('link', { name: 'It is in the sensor' }).click();
+    await page.waitForURL(`**/sensors/${row.identifier}`);
     await page.getByRole('heading', { name: 'Float 21' }).waitFor();
     expect(await page.content()).not.toContain(secret);
     await sound(page);
