@@ -2,8 +2,7 @@
 
 /** The service worker, as the pages see it. It lives in `public/sw.js`. */
 
-/* The build writes these in as words; in a browser there is no environment. */
-// eslint-disable-next-line no-restricted-syntax -- see above
+// eslint-disable-next-line no-restricted-syntax -- the build writes these in as words: in a browser there is no environment to read in one place
 const BUILD = process.env.NODE_ENV === 'development' ? 'dev' : (process.env.NEXT_PUBLIC_BUILD ?? 'none');
 const ANSWER_MS = 2_000;
 

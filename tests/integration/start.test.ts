@@ -7,6 +7,7 @@ import { afterAll, describe, expect, it } from 'vitest';
 import { DEMO_BATCHES, DEMO_PASSPHRASE, DEMO_PEOPLE } from '@/db/seed/demo';
 import { DEMO_PAST } from '@/db/seed/past';
 import { freePort } from '@/scripts/lib/postgres';
+import { runs } from '../support/processes';
 import { signInOverHttp } from '../support/web';
 
 const ROOT = resolve(import.meta.dirname, '../..');
@@ -50,16 +51,7 @@ class Start {
 /** Processes whose surroundings name this test's data folder. */
 function leftOver(): string[] {
   const lines = execFileSync('bash', ['-c', `grep -lz '^DATA_DIR=${folder}$' /proc/[0-9]*/environ 2>/dev/null | cut -d/ -f3; pgrep -f '${folder}' || true`], { encoding: 'utf8' });
-  return lines.split('\n').filter((pid) => pid !== '' && Number(pid) !== process.pid && alive(Number(pid)));
-}
-
-function alive(pid: number): boolean {
-  try {
-    process.kill(pid, 0);
-    return true;
-  } catch {
-    return false;
-  }
+  return lines.split('\n').filter((pid) => pid !== '' && Number(pid) !== process.pid && runs(Number(pid)));
 }
 
 describe('bash scripts/start.sh', { timeout: 2 * PATIENCE_MS }, () => {

@@ -79,3 +79,13 @@ export async function until<T>(what: string, holds: () => T | Promise<T>, patien
     await new Promise((next) => setTimeout(next, 25));
   }
 }
+
+/** Whether a process of that number runs. */
+export function runs(pid: number): boolean {
+  try {
+    process.kill(pid, 0);
+    return true;
+  } catch {
+    return false;
+  }
+}

@@ -6,7 +6,7 @@ import { encode } from 'next-auth/jwt';
 import { SignIn } from '@/db/models';
 import { buildWeb } from '@/scripts/lib/build';
 import { freePort } from '@/scripts/lib/postgres';
-import { until } from './processes';
+import { runs, until } from './processes';
 
 const ROOT = resolve(import.meta.dirname, '../..');
 const DIST = '.next';
@@ -34,17 +34,8 @@ async function take(lock: string): Promise<boolean> {
     return true;
   }
   const pid = Number(await readFile(holder, 'utf8').catch(() => NaN));
-  if (pid > 0 && !alive(pid)) await rm(lock, { recursive: true, force: true });
+  if (pid > 0 && !runs(pid)) await rm(lock, { recursive: true, force: true });
   return false;
-}
-
-function alive(pid: number): boolean {
-  try {
-    process.kill(pid, 0);
-    return true;
-  } catch {
-    return false;
-  }
 }
 
 /** Builds the web part once for all suites, unless the build there has the same sources. TEST_WEB_DIST names a build to take as it is. */
