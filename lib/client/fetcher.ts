@@ -58,7 +58,7 @@ const unreachable = () => new ClientError(0, 'unreachable', 'The server cannot b
 export const getJson = <T>(path: string): Promise<T> => request<T>(path, { method: 'GET' });
 
 /** As `getJson`, and never what the device kept. */
-export const getFresh = <T>(path: string): Promise<T> => request<T>(path, { method: 'GET' }, false);
+export const getFresh = <T>(path: string, signal?: AbortSignal): Promise<T> => request<T>(path, { method: 'GET', ...(signal && { signal }) }, false);
 
 export const sendJson = <T>(method: 'POST' | 'PATCH' | 'DELETE', path: string, body?: unknown, signal?: AbortSignal): Promise<T> =>
   request<T>(path, { method, ...(signal && { signal }), ...(body === undefined ? {} : { headers: { 'content-type': 'application/json' }, body: JSON.stringify(body) }) });

@@ -26,7 +26,7 @@ export function useBrowser() {
     await browser.close();
   });
 
-  async function visit(options: { viewport?: { width: number; height: number }; phone?: boolean; night?: boolean } = {}): Promise<Visit> {
+  async function visit(options: { viewport?: { width: number; height: number }; phone?: boolean; night?: boolean; worker?: boolean } = {}): Promise<Visit> {
     const context = await browser.newContext({
       viewport: options.viewport ?? (options.phone ? PHONE : DESK),
       hasTouch: options.phone ?? false,
@@ -34,6 +34,7 @@ export function useBrowser() {
       timezoneId: 'UTC',
       locale: 'en-GB',
       reducedMotion: 'reduce',
+      serviceWorkers: options.worker === false ? 'block' : 'allow',
     });
     if (options.night !== undefined) await context.addInitScript((theme) => document.addEventListener('DOMContentLoaded', () => (document.documentElement.dataset.theme = theme)), options.night ? 'night' : 'day');
     const page = await context.newPage();

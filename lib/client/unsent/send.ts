@@ -101,7 +101,7 @@ async function sendInOrder(): Promise<Stopped> {
   if (!(await allUnsent()).some(due)) return null;
   // Somebody else may have signed in here since: their name must not stand under it.
   try {
-    const { person, cellar } = await getFresh<MeBody>('/me');
+    const { person, cellar } = await getFresh<MeBody>('/me', AbortSignal.timeout(PATIENCE_MS));
     if (person.id !== writer?.personId || cellar.id !== writer.cellarId) return 'signed-out';
   } catch (error) {
     return error instanceof ClientError && error.status === 401 ? 'signed-out' : 'away';
@@ -115,7 +115,8 @@ async function sendInOrder(): Promise<Stopped> {
       await setUnsent(entry.order!, 'refused', reasonOf(error));
     }
     const { batchId } = entry;
-    await refresh((path) => (batchId === null ? isPath('/jobs')(path) || isPath('/alerts')(path) : isOfBatch(batchId)(path) || isPath('/shelf')(path)));
+    // Not waited for: an answer that never comes would hold up what is still to be sent.
+    void refresh((path) => (batchId === null ? isPath('/jobs')(path) || isPath('/alerts')(path) : isOfBatch(batchId)(path) || isPath('/shelf')(path))).catch(() => undefined);
   }
   return null;
 }
