@@ -104,13 +104,22 @@ function firstWords(lane: LaneBody): { headline: string; reason: string } {
     : { headline: 'No readings yet.', reason: 'Read by hand, or put a sensor in.' };
 }
 
+/** What a lane says that has ended: the watch is over, and its last call with it. */
+function lastWords(lane: LaneBody, timeZone: string): { headline: string; reason: string } {
+  const day = lane.ended_at === null ? '' : dayName(Date.parse(lane.ended_at) / 1000, timeZone);
+  const bottled = lane.entries.some((entry) => entry.kind === 'bottling');
+  const gravity = lane.assessment?.gravity?.value;
+  const reason = [gravity === undefined ? null : `Last at ${gravityText(gravity)}.`, bottled ? 'Its bottles are in the book.' : null].filter((part) => part !== null).join(' ');
+  return { headline: `${bottled ? 'Bottled' : 'Ended'}${day && ` ${day}`}.`, reason };
+}
+
 /** Judges and words one lane. `now` in seconds since 1970. */
 export function laneView(lane: LaneBody, listed: readonly AlertBody[] | undefined, now: number, timeZone: string): LaneView {
   const alerts = alertsOf(lane, listed);
   const attention = attentionOfLane(lane, alerts);
   const call = lane.assessment?.calls[attention.call];
   const speaking = alerts.find((alert) => alert.call === attention.call);
-  const words = call ? { headline: call.headline, reason: call.reason } : firstWords(lane);
+  const words = lane.state === 'ended' ? lastWords(lane, timeZone) : call ? { headline: call.headline, reason: call.reason } : firstWords(lane);
   return {
     lane,
     attention,

@@ -35,6 +35,13 @@ describe('a lane', () => {
     expect(viewOf({ assessment: null }).reason).toContain('first readings');
   });
 
+  it('says of a batch that has ended what became of it, and no call any more', () => {
+    const ended = { state: 'ended', ended_at: at('2026-10-14T18:00Z'), calls: { bottle: { verdict: 'yes', headline: 'May be bottled: since Mon.' } } } as const;
+    expect(viewOf({ ...ended, entries: [] })).toMatchObject({ headline: 'Ended Wed 14 Oct.', reason: 'Last at 1.041.' });
+    const bottling = { id: 'b', kind: 'bottling', at: at('2026-10-14T18:00Z'), gravity: null, neck: null, text: null } as const;
+    expect(viewOf({ ...ended, entries: [bottling] })).toMatchObject({ headline: 'Bottled Wed 14 Oct.', reason: 'Last at 1.041. Its bottles are in the book.', attention: { state: 'Done' } });
+  });
+
   it('takes an alert’s level from the list where it may be read, else by its call', () => {
     const lane = aLane({ alerts: [{ call: 'neck', state: 'open' }] });
     expect(alertsOf(lane, undefined)[0]?.level).toBe('check');
