@@ -74,6 +74,7 @@ function timesOf({ setup, readings }: Case, every: string | undefined, at: strin
   }
   let last = setup.pitchedAt ?? 0;
   for (const reading of readings) last = Math.max(last, reading.at, reading.receivedAt ?? reading.at);
+  for (const event of setup.events) last = Math.max(last, event.at, event.knownAt ?? event.at);
   if (every === undefined || setup.pitchedAt === null) return [last];
   const step = hoursOf(every) * 3_600_000;
   const times: Instant[] = [];
