@@ -10,6 +10,7 @@ import * as messages from './migrations/0008-messages';
 import * as rooms from './migrations/0009-rooms';
 import * as archiveAndWebhooks from './migrations/0010-archive-and-webhooks';
 import * as indexes from './migrations/0011-indexes';
+import * as currency from './migrations/0013-currency';
 import type { Migration, Run } from './migrations/types';
 
 /** In order. A migration that has landed is never edited; the next one mends it. */
@@ -24,6 +25,7 @@ const MIGRATIONS: ReadonlyArray<{ name: string; migration: Migration }> = [
   { name: '0009-rooms', migration: rooms },
   { name: '0010-archive-and-webhooks', migration: archiveAndWebhooks },
   { name: '0011-indexes', migration: indexes },
+  { name: '0013-currency', migration: currency },
 ];
 
 /** Held while migrating, so that several processes that start together do it once. */

@@ -1,6 +1,8 @@
 import Link from 'next/link';
 import type { ReactNode } from 'react';
 import { BackIcon, OnwardIcon } from '@/components/ui/icons';
+import { AskHow } from '@/components/how/AskHow';
+import { answersOfFacts } from '@/components/how/judged';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Vessel } from '@/components/vessel/Vessel';
 import type { VesselState } from '@/components/vessel/describe';
@@ -18,13 +20,14 @@ export interface HeadActions {
 
 const compareHref = (batchId: string): string => `/compare?batches=${batchId}`;
 
-function Facts({ facts, phone }: { facts: readonly Fact[]; phone: boolean }) {
+function Facts({ batch, facts, phone }: { batch: BatchBody; facts: readonly Fact[]; phone: boolean }) {
   const shown = phone ? facts.filter((fact) => fact.phone) : facts;
   const names: Record<string, string> = phone ? { 'original gravity': 'pitched at', attenuation: 'fallen', 'strength so far': 'strength' } : {};
   const order = phone ? ['now', 'last known', 'attenuation', 'strength so far', 'original gravity', 'room', 'foam'] : shown.map((fact) => fact.name);
   const ordered = order.flatMap((name) => shown.find((fact) => fact.name === name) ?? []);
   return (
-    <dl className={phone ? 'grid grid-cols-4 border-b' : 'mt-[14px] grid grid-cols-4 border-t wide:flex'}>
+    <div className={phone ? 'border-b' : 'mt-[14px] border-t wide:flex'}>
+      <dl className={phone ? 'grid grid-cols-4' : 'grid min-w-0 flex-1 grid-cols-4 wide:flex'}>
       {ordered.map((fact, index) => (
         <div key={fact.name} className={phone ? `border-rule py-2 ${index > 3 ? 'border-t' : ''} ${index % 4 === 0 ? 'pl-(--margin)' : 'border-l pl-2'}` : `flex-auto py-2 pr-3 ${index === 0 ? '' : index % 4 === 0 ? 'wide:border-l wide:pl-3' : 'border-l pl-3'}`}>
           <dt className="type-label truncate text-[0.71875rem] text-ink2">{names[fact.name] ?? fact.name}</dt>
@@ -34,7 +37,9 @@ function Facts({ facts, phone }: { facts: readonly Fact[]; phone: boolean }) {
           </dd>
         </div>
       ))}
-    </dl>
+      </dl>
+      <AskHow of={`figures of ${batch.name}`} answers={() => answersOfFacts(batch, facts)} className={phone ? 'w-full border-t border-rule px-(--margin)' : 'py-2 wide:border-l wide:pl-3'} />
+    </div>
   );
 }
 
@@ -86,7 +91,7 @@ export function BatchHead({ batch, vessel, facts, actions }: { batch: BatchBody;
             )}
           </div>
         </div>
-        <Facts facts={facts.filter((fact) => !AROUND.has(fact.name))} phone={false} />
+        <Facts batch={batch} facts={facts.filter((fact) => !AROUND.has(fact.name))} phone={false} />
         {around.length > 0 && <Around facts={around} />}
       </div>
     </header>
@@ -117,12 +122,12 @@ export function PhoneHead({ batch, meta, onSetup }: { batch: BatchBody; meta: re
   );
 }
 
-export function PhoneFacts({ batchId, facts, work }: { batchId: string; facts: readonly Fact[]; work: string | null }) {
+export function PhoneFacts({ batch, facts, work }: { batch: BatchBody; facts: readonly Fact[]; work: string | null }) {
   return (
     <div className="strip:hidden">
-      <Facts facts={facts} phone />
+      <Facts batch={batch} facts={facts} phone />
       {work && <Onward href={work}>Cellar work: add, rack, fine, family</Onward>}
-      <Onward href={compareHref(batchId)}>Compare with another batch</Onward>
+      <Onward href={compareHref(batch.id)}>Compare with another batch</Onward>
     </div>
   );
 }

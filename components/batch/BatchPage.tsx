@@ -155,9 +155,9 @@ function Loaded({ batch }: { batch: BatchBody }) {
   return (
     <>
       <PhoneHead batch={batch} onSetup={actions.onSetup} meta={[`${day === null ? 'not pitched' : `day ${day}`}, ${litres(batch.volume_l)}`, ...(heard === null ? [] : [`heard ${when(heard, now, timeZone)}`])]} />
-      <BatchHead batch={batch} vessel={vessel} facts={facts} actions={actions} />
+      <BatchHead batch={shown} vessel={vessel} facts={facts} actions={actions} />
       {first && <Decision row={first} vessel={vessel} when={whenOf(first, judged, now, timeZone)} done={working ? doneAct(first, batch, open, may('entries.alter')) : null} onRead={onRead} mayTake={may('alerts.acknowledge')} />}
-      <PhoneFacts batchId={batch.id} facts={facts} work={actions.work} />
+      <PhoneFacts batch={shown} facts={facts} work={actions.work} />
       <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px] wide:grid-rows-[auto_1fr]">
         <div className="wide:col-start-1 wide:row-start-1">
           <Evidence name={batch.name} picture={picture} span={span} whole={whole} onSpan={(next) => setChosen(isWhole(next, whole) ? null : next)} timeZone={timeZone} phone={phone} arriving={series.loading} trouble={trouble ? `${trouble.what} did not arrive (${trouble.error?.status ? `error ${trouble.error.status}` : 'no answer'}). Shown is what was known before.` : null} onRetry={retryAll} plays={footing ? plays : null}>

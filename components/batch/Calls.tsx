@@ -2,6 +2,7 @@
 
 import { useState } from 'react';
 import { Button, LinkButton } from '@/components/ui/Button';
+import { How } from '@/components/ui/How';
 import { OnwardIcon } from '@/components/ui/icons';
 import { Ruler } from '@/components/ui/Ruler';
 import { Sentence } from '@/components/ui/Sentence';
@@ -54,6 +55,7 @@ function Evidence({ row }: { row: CallRow }) {
           </div>
         ))}
       </dl>
+      <How how={row.how} of={row.question} />
     </>
   );
 }

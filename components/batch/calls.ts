@@ -2,6 +2,8 @@ import type { AssessmentBody, CallBody } from '@/lib/contracts/assessment';
 import type { BatchBody } from '@/lib/contracts/batches';
 import { when } from '@/components/charts/zone';
 import { STATE_WORDS, stateOfCall, type StateWord } from '@/lib/core/calls/attention';
+import type { How } from '@/lib/core/how/how';
+import { howOfCall } from '@/lib/core/how/judged';
 import { CALL_NAMES, type CallName, type Neck } from '@/lib/core/types';
 import { rulerOf, thresholdsOf, type RulerParts } from './evidence';
 
@@ -23,6 +25,8 @@ export interface CallRow {
   takenBy: string | null;
   /** What a person holds instead, where they have set it aside. */
   overruled: BatchBody['overruled'][number] | null;
+  /** Its rule, and the figures that it was held to. */
+  how: How;
 }
 
 const QUESTIONS: Record<CallName, string> = {
@@ -102,6 +106,7 @@ export function callRows(batch: Pick<BatchBody, 'neck' | 'alerts' | 'overruled' 
       alert: alert?.state === 'open' ? alert.id : null,
       takenBy: alert?.taken_by ?? null,
       overruled,
+      how: howOfCall(name, call.evidence),
     };
   });
   return rows.sort((a, b) => rank(a, judged) - rank(b, judged) || ORDER.indexOf(a.name) - ORDER.indexOf(b.name));

@@ -5,11 +5,13 @@ import { useMemo, useState } from 'react';
 import Link from 'next/link';
 import type { CSSProperties } from 'react';
 import { drinkHex } from '@/components/charts/palette';
+import { AskHow } from '@/components/how/AskHow';
 import { FilterTabs } from '@/components/ui/FilterTabs';
 import { Haze } from '@/components/ui/Haze';
 import { EmptyState, ErrorState } from '@/components/ui/Notice';
 import { LinkButton } from '@/components/ui/Button';
 import { useNow } from '@/components/ui/now';
+import { How } from '@/components/ui/How';
 import { State } from '@/components/ui/StateMark';
 import { Vessel } from '@/components/vessel/Vessel';
 import type { VesselState } from '@/components/vessel/describe';
@@ -19,9 +21,10 @@ import type { BenchFacts } from '@/lib/contracts/bench';
 import type { BenchRequest, BenchVerdict, BottlePicture } from '@/lib/core/bottling/bench';
 import { PRESSURE_CAUTIONS } from '@/lib/core/bottling/bottles';
 import { drinkPressure } from '@/lib/core/bottling/co2';
-import { pressureByDay } from '@/lib/core/bottling/conditioning';
+import { howOfWeeks, pressureByDay } from '@/lib/core/bottling/conditioning';
 import { primes } from '@/lib/core/bottling/judge';
 import { judgeBench } from '@/lib/core/bottling/verdict';
+import { howReadByHand } from '@/lib/core/how/judged';
 import { After } from './After';
 import { BenchForm } from './BenchForm';
 import { BottleIt } from './BottleIt';
@@ -99,6 +102,15 @@ function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
               <br />
               {done.remaining === null ? 'what may still ferment is not known' : `may still ferment: ${done.remaining.value.hi.toFixed(1)} points`}
             </p>
+            {(done.gravity !== null || done.remaining !== null) && (
+              <AskHow
+                of={`${batch.name} on the bench`}
+                answers={() => [
+                  ...(done.gravity === null ? [] : [{ name: 'by hand', says: gravityText(done.gravity), how: howReadByHand(done.gravity) }]),
+                  ...(done.remaining === null ? [] : [{ name: 'may still ferment, at most', says: `${done.remaining.value.hi.toFixed(1)} points`, how: done.remaining.how }]),
+                ]}
+              />
+            )}
           </div>
         </div>
       </div>
@@ -107,14 +119,14 @@ function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
         <Done facts={facts} timeZone={timeZone} />
         <BenchForm draft={draft} errors={errors ?? {}} facts={facts} onChange={(part) => setDraft((before) => ({ ...before, ...part }))} />
         <div className="mt-4">
-          <BottleIt facts={facts} form={form} verdict={verdict} mayBottle={mayBottle} mayOverride={mayOverride} />
+          <BottleIt facts={facts} form={form} request={request} verdict={verdict} mayBottle={mayBottle} mayOverride={mayOverride} />
         </div>
       </div>
       <div className="min-w-0 max-wide:border-t-[1.5px] max-wide:border-ink">
         {verdict && request && <Pictures verdict={verdict} request={request} timeZone={timeZone} />}
         {verdict?.verdict === 'stop' && <Ways ways={verdict.ways} onUse={(way) => way.request && setDraft((before) => takeWay(before, way.request!))} />}
         {verdict?.verdict === 'safe' && request && now !== null && <After now={now} cellarC={request.cellarC} primed={primes(request)} timeZone={timeZone} />}
-        {verdict && <BottleTable verdict={verdict} />}
+        {verdict && request && <BottleTable verdict={verdict} request={request} />}
         {facts.for_gas.assumed && <p className="type-reason border-t px-(--margin) py-2 text-ink2">Nobody told the original gravity: strength and sugar are taken at the upper end of what they may be.</p>}
         <Cautions />
       </div>
@@ -160,15 +172,17 @@ function Pictures({ verdict, request, timeZone }: { verdict: BenchVerdict; reque
 function BottlePictures({ bottle, verdict, request, timeZone, now }: { bottle: BottlePicture; verdict: BenchVerdict; request: BenchRequest; timeZone: string; now: number }) {
   const { residual, remaining } = verdict;
   const low = (celsius: number) => Math.max(0, drinkPressure(bottle.volumes.value.lo, celsius, request.drink).gaugeBar);
-  const points = useMemo(
-    () =>
-      pressureByDay(
-        { residualVolumes: residual.value.hi, addedVolumes: Math.max(0, bottle.volumes.value.hi - residual.value.hi), remainingPoints: remaining.value.hi, drink: request.drink },
-        now,
-        request.warmestStoreC,
-      ),
-    [bottle, residual, remaining, request, now],
+  const inBottle = useMemo(
+    () => ({
+      residualVolumes: residual.value.hi,
+      addedVolumes: Math.max(0, bottle.volumes.value.hi - residual.value.hi),
+      remainingPoints: remaining.value.hi,
+      // What the sugar for fizz adds makes the drink hold less gas, as in the table.
+      drink: { ...request.drink, abvPercent: Math.min(30, request.drink.abvPercent + bottle.abvAddedPercent) },
+    }),
+    [bottle, residual, remaining, request],
   );
+  const points = useMemo(() => pressureByDay(inBottle, now, request.warmestStoreC), [inBottle, now, request]);
   return (
     <div className="grid wide:grid-cols-2">
       <div className="min-w-0 px-(--margin) pt-3">
@@ -182,7 +196,8 @@ function BottlePictures({ bottle, verdict, request, timeZone, now }: { bottle: B
           <span className="font-bold text-ink">Week by week</span> at <span className="fig">{degrees(request.warmestStoreC)}</span>
         </h3>
         <Weeks points={points} limit={limitOf(bottle)} top={scaleTop(bottle)} celsius={request.warmestStoreC} timeZone={timeZone} />
-        <p className="type-reason pb-2 text-ink2">The course in between is a guess; the end is reckoned.</p>
+        <p className="type-reason text-ink2">The course in between is a guess; the end is reckoned.</p>
+        <How of="The weeks" how={howOfWeeks(inBottle, request.warmestStoreC)} />
       </div>
     </div>
   );

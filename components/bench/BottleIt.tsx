@@ -8,24 +8,28 @@ import { Box } from '@/components/ui/Box';
 import { Button } from '@/components/ui/Button';
 import { Field, Select, TextField } from '@/components/ui/Field';
 import { How } from '@/components/ui/How';
+import { useMoney } from '@/components/ui/money';
 import { FormError } from '@/components/ui/Notice';
 import { ClientError } from '@/lib/client/fetcher';
 import { bottleBatch, usePlaces } from '@/lib/client/lots';
 import type { BenchFacts, BenchForm } from '@/lib/contracts/bench';
-import type { BenchSafe, BenchVerdict } from '@/lib/core/bottling/bench';
+import type { BenchRequest, BenchSafe, BenchVerdict } from '@/lib/core/bottling/bench';
 import { BOTTLES } from '@/lib/core/bottling/bottles';
+import { howOfAbvAdded, howOfDrops, USUAL_DROP_G } from '@/lib/core/bottling/priming';
 import { REASON_MIN_LETTERS } from '@/lib/core/bottling/verdict';
 import { sizeWords } from './words';
 
 /** What goes in; only a safe bench has it. */
-function Dose({ verdict }: { verdict: BenchSafe }) {
+function Dose({ verdict, request }: { verdict: BenchSafe; request: BenchRequest }) {
   const { dose, plan } = verdict;
   if (dose.way === 'none') return <p className="type-fig-lg">no sugar</p>;
   if (dose.way === 'drops') {
+    const grams = request.priming.way === 'drops' ? request.priming.gramsEach : USUAL_DROP_G;
     return (
       <>
         <p className="type-fig-lg">{dose.totalDrops} drops</p>
         <p className="type-label text-ink2">{plan.filled.map((filled) => `${dose.drops[filled.key] ?? 0} in each ${sizeWords(filled.sizeMl)}`).join(', ')}</p>
+        <How of="Drops in all" how={howOfDrops(grams, dose.totalDrops)} />
       </>
     );
   }
@@ -37,6 +41,7 @@ function Dose({ verdict }: { verdict: BenchSafe }) {
         {verdict.abvAddedPercent >= 0.05 && `, adds up to ${verdict.abvAddedPercent.toFixed(1)} % vol`}
       </p>
       <How of="Sugar in all" how={dose.how} />
+      {verdict.abvAddedPercent >= 0.05 && <How named of="what it adds" how={howOfAbvAdded(dose.sugar, verdict.abvAddedPercent)} />}
     </>
   );
 }
@@ -44,15 +49,18 @@ function Dose({ verdict }: { verdict: BenchSafe }) {
 interface BottleItProps {
   facts: BenchFacts;
   form: BenchForm | null;
+  /** The same as the core takes it. */
+  request: BenchRequest | null;
   verdict: BenchVerdict | null;
   mayBottle: boolean;
   mayOverride: boolean;
 }
 
 /** The dose, and the act. Stopped: no dose, the button held back, and for a brewer the written reason. */
-export function BottleIt({ facts, form, verdict, mayBottle, mayOverride }: BottleItProps) {
+export function BottleIt({ facts, form, request, verdict, mayBottle, mayOverride }: BottleItProps) {
   const router = useRouter();
   const { places } = usePlaces();
+  const { currency } = useMoney();
   const [open, setOpen] = useState(false);
   const [code, setCode] = useState(facts.suggested_code);
   const [name, setName] = useState(facts.batch.name);
@@ -99,8 +107,8 @@ export function BottleIt({ facts, form, verdict, mayBottle, mayOverride }: Bottl
       <div className="flex items-end justify-between gap-4">
         <div className="min-w-0">
           <p className="type-label text-ink2">sugar in all</p>
-          {verdict?.verdict === 'safe' ? (
-            <Dose verdict={verdict} />
+          {verdict?.verdict === 'safe' && request ? (
+            <Dose verdict={verdict} request={request} />
           ) : (
             <>
               <p className="type-fig-lg">held back</p>
@@ -133,7 +141,7 @@ export function BottleIt({ facts, form, verdict, mayBottle, mayOverride }: Bottl
           )}
           <div className="grid grid-cols-2 gap-3">
             <Field label="code on the lot" value={code} error={errors.code?.[0]} onChange={(event) => setCode(event.target.value)} />
-            <Field label="bottles, caps, sugar cost" placeholder="not told" inputMode="decimal" value={cost} error={errors.other_cost?.[0]} onChange={(event) => setCost(event.target.value)} />
+            <Field label="bottles, caps, sugar cost" unit={currency} placeholder="not told" inputMode="decimal" value={cost} error={errors.other_cost?.[0]} onChange={(event) => setCost(event.target.value)} />
           </div>
           <Field label="name" value={name} error={errors.name?.[0]} onChange={(event) => setName(event.target.value)} />
           <Select label="they will stand" value={place} error={errors.place_id?.[0]} onChange={(event) => setPlace(event.target.value)}>

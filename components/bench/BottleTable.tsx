@@ -1,13 +1,15 @@
 import { How } from '@/components/ui/How';
-import type { BenchVerdict } from '@/lib/core/bottling/bench';
-import { BOTTLES, CLOSURE_CATALOGUE } from '@/lib/core/bottling/bottles';
+import { volumeText } from '@/components/ui/units';
+import type { BenchRequest, BenchVerdict } from '@/lib/core/bottling/bench';
+import { BOTTLES, CLOSURE_CATALOGUE, howOfHolds } from '@/lib/core/bottling/bottles';
+import { howOfPlan } from '@/lib/core/bottling/plan';
 import { limitOf } from './Tubes';
 import { sizeWords } from './words';
 
 const range = ({ lo, hi }: { lo: number; hi: number }) => (hi - lo < 0.05 ? hi.toFixed(1) : `${lo.toFixed(1)}–${hi.toFixed(1)}`);
 
 /** Every bottle of the plan: how many, the gas and the pressure in it, and what it holds. */
-export function BottleTable({ verdict }: { verdict: BenchVerdict }) {
+export function BottleTable({ verdict, request }: { verdict: BenchVerdict; request: BenchRequest }) {
   const { plan, bottles, residual, remaining } = verdict;
   return (
     <section aria-label="Plan" className="border-t">
@@ -19,16 +21,17 @@ export function BottleTable({ verdict }: { verdict: BenchVerdict }) {
         ))}
         {plan.bottles > 0 && (
           <>
-            takes <span className="fig">{plan.bottledL.toFixed(2)} L</span>; <span className="fig">{plan.lostL.toFixed(2)} L</span> stays on the lees
+            takes <span className="fig">{volumeText(plan.bottledL)}</span>; <span className="fig">{volumeText(plan.lostL)}</span> stays on the lees
             {plan.overL >= 0.01 && (
               <>
-                , <span className="fig">{plan.overL.toFixed(2)} L</span> over for a tasting glass
+                , <span className="fig">{volumeText(plan.overL)}</span> over for a tasting glass
               </>
             )}
-            .
+            .{' '}
           </>
         )}
       </p>
+      <How of="How many bottles" how={howOfPlan(request.volumeL, plan, request.bottles.map(({ key, choice, atHand }) => ({ key, sizeMl: choice.sizeMl, atHand })))} className="px-(--margin)" />
       <div className="type-label flex flex-wrap gap-x-6 px-(--margin) pb-2 text-ink2">
         <span>
           gas there already {range(residual.value)} volumes <How of="Gas there already" how={residual.how} />
@@ -72,7 +75,7 @@ export function BottleTable({ verdict }: { verdict: BenchVerdict }) {
                     ))}
                     <td>
                       {bottle.holds.rating === 'never' ? 'still only' : `${limit.toFixed(1)} bar${bottle.holds.confirmed ? '' : ', usual'}`}{' '}
-                      <How of="What it holds" how={{ formula: 'the weaker of bottle and closure; the maker’s figure in place of the usual one', inputs: [{ name: 'maker’s figure', value: bottle.choice.confirmedBar, unit: 'bar' }], source: bottle.holds.source, status: bottle.holds.status }} />
+                      <How of="What it holds" how={howOfHolds(bottle.choice)} />
                     </td>
                   </tr>
                 );

@@ -1,13 +1,12 @@
 'use client';
 
 import { Field, Select } from '@/components/ui/Field';
+import { MOST_BOTTLE_ROWS } from '@/lib/contracts/bench';
 import { BOTTLE_KINDS, BOTTLES, CLOSURE_CATALOGUE, type BottleKind, type Closure } from '@/lib/core/bottling/bottles';
 import { BottleDrawing } from './BottleDrawing';
 import { newRow, type BenchDraft, type BenchErrors, type BottleRow } from './draft';
 import { SHORT_BOTTLE, sizeWords } from './words';
 
-/** As many as one plan takes. */
-const MOST_ROWS = 12;
 const usual = (kind: BottleKind) => (BOTTLES[kind].rating === 'never' ? 'never' : BOTTLES[kind].rating.toFixed(1));
 
 interface RowProps {
@@ -90,7 +89,7 @@ export function Bottles({ draft, errors, onChange }: { draft: BenchDraft; errors
               type="button"
               aria-label={`Add a ${BOTTLES[kind].name}, usually rated ${usual(kind)}${count > 0 ? `; ${count} on the bench` : ''}`}
               onClick={() => add(kind)}
-              disabled={rows.length >= MOST_ROWS}
+              disabled={rows.length >= MOST_BOTTLE_ROWS}
               className={`type-tick relative flex min-w-0 flex-col items-center gap-1 px-0.5 pb-1 pt-2 ${count > 0 ? 'bg-desk outline-2 -outline-offset-2 outline-ink' : 'bg-lit hover:bg-desk'}`}
             >
               <BottleDrawing kind={kind} filled={count > 0} height={54} />
@@ -106,7 +105,7 @@ export function Bottles({ draft, errors, onChange }: { draft: BenchDraft; errors
         })}
       </div>
       {errors.bottles && <p className="type-label pt-1 text-madder">{errors.bottles}</p>}
-      <p className="type-reason pb-2 pt-1 text-ink2">Filled in this order: put the small size last, for the rest.{rows.length >= MOST_ROWS && ` At most ${MOST_ROWS} kinds stand on the bench at once.`}</p>
+      <p className="type-reason pb-2 pt-1 text-ink2">Filled in this order: put the small size last, for the rest.{rows.length >= MOST_BOTTLE_ROWS && ` The bench is full: ${MOST_BOTTLE_ROWS} kinds and sizes in one plan. Take one off to add another, or bottle the rest as a second lot.`}</p>
       {rows.map((row, index) => (
         <Row
           key={row.key}

@@ -1,7 +1,9 @@
 import { Sentence } from '@/components/ui/Sentence';
+import { How } from '@/components/ui/How';
 import { StateMark } from '@/components/ui/StateMark';
 import { Button } from '@/components/ui/Button';
 import type { BenchVerdict, WayOut } from '@/lib/core/bottling/bench';
+import { howOfWay } from '@/lib/core/bottling/ways';
 
 /** Safe or stop, in one sentence; everything else that is wrong below it. */
 export function Verdict({ verdict }: { verdict: BenchVerdict }) {
@@ -50,6 +52,7 @@ export function Ways({ ways, onUse }: { ways: readonly WayOut[]; onUse: (way: Wa
           <p className="type-body pb-1 text-ink2">
             <Sentence>{way.sentence}</Sentence>
           </p>
+          <How of={way.title} how={howOfWay(way)} />
           {way.request && (
             <Button className="mt-auto" onClick={() => onUse(way)}>
               Use this

@@ -10,6 +10,7 @@ import { Field, Select } from '@/components/ui/Field';
 import { FilterTabs } from '@/components/ui/FilterTabs';
 import { Haze } from '@/components/ui/Haze';
 import { EmptyState, ErrorState } from '@/components/ui/Notice';
+import { useMoney } from '@/components/ui/money';
 import { useNow } from '@/components/ui/now';
 import { GroupBar, PageHead } from '@/components/ui/Page';
 import { State } from '@/components/ui/StateMark';
@@ -42,6 +43,7 @@ const SORTS: Record<Sort, { name: string; order: 'asc' | 'desc' }> = {
 function LotRow({ lot, timeZone, now }: { lot: LotSummary; timeZone: string; now: number }) {
   const day = (at: string) => dayWords(at, timeZone, now);
   const score = lot.tastings.score;
+  const { money } = useMoney();
   return (
     <li className="border-b">
       <Link href={`/book/${lot.id}`} className="drink grid gap-x-5 gap-y-1 py-2.5 pl-(--margin) pr-(--margin) no-underline -outline-offset-2 hover:bg-lit strip:grid-cols-[10px_minmax(0,1.4fr)_minmax(0,1fr)_minmax(0,1fr)] strip:items-center" style={{ '--drink': drinkHex(lot.batch.drink_colour) } as CSSProperties}>
@@ -56,7 +58,7 @@ function LotRow({ lot, timeZone, now }: { lot: LotSummary; timeZone: string; now
           <span className="block font-semibold">{leftWords(lot.counts)}</span>
           <span className="text-ink2">
             {lot.places.join(', ') || 'no place named'}
-            {lot.cost_per_litre && `; ${costWords(lot)} a litre`}
+            {lot.cost_per_litre && `; ${costWords(lot, money)} a litre`}
           </span>
         </span>
         <span className="type-label">

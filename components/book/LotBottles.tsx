@@ -6,7 +6,8 @@ import { GroupBar } from '@/components/ui/Page';
 import type { LotBody } from '@/lib/contracts/lots';
 import { BOTTLES, CLOSURE_CATALOGUE } from '@/lib/core/bottling/bottles';
 import type { How as HowAnswer } from '@/lib/core/how/how';
-import { leftWords, money } from './words';
+import { useMoney } from '@/components/ui/money';
+import { leftWords } from './words';
 
 interface Figure {
   name: string;
@@ -15,19 +16,20 @@ interface Figure {
 }
 
 /** What is known of one kind of bottle, each figure with where it comes from. */
-function figuresOf(bottle: LotBody['bottles'][number], lot: LotBody): Figure[] {
+function figuresOf(bottle: LotBody['bottles'][number], lot: LotBody, money: (amount: number) => string): Figure[] {
   const { cellar_c, warmest_store_c } = lot.bench;
   return [
-    { name: 'holds', says: bottle.rating === 'never' ? 'still drink' : `${bottle.rating.toFixed(1)} bar${bottle.rating_confirmed ? '' : ', not confirmed'}`, how: null },
+    { name: 'holds', says: bottle.rating === 'never' ? 'still drink' : `${bottle.rating.toFixed(1)} bar${bottle.rating_confirmed ? '' : ', not confirmed'}`, how: bottle.how.holds },
     { name: `in the cellar, ${degrees(cellar_c)}`, says: `${bottle.cellar_bar.toFixed(1)} bar`, how: bottle.how.cellar },
     { name: `warmest, ${degrees(warmest_store_c)}`, says: `${bottle.warm_bar.toFixed(1)} bar`, how: bottle.how.warm },
     { name: 'if the last sugar goes', says: `${bottle.worst_bar.toFixed(1)} bar`, how: bottle.how.worst },
-    ...(bottle.cost_each ? [{ name: 'cost of one', says: `${money(bottle.cost_each)}${lot.cost_known ? '' : ' or more'}`, how: lot.how.cost }] : []),
+    ...(bottle.cost_each ? [{ name: 'cost of one', says: `${money(bottle.cost_each.value)}${lot.cost_known ? '' : ' or more'}`, how: lot.how.cost }] : []),
   ];
 }
 
 /** The bottles of a lot: how many are left and where, what they hold and what is in them at most. */
 export function LotBottles({ lot }: { lot: LotBody }) {
+  const { money } = useMoney();
   return (
     <section aria-label="Bottles">
       <GroupBar word="Bottles" note={leftWords(lot.counts)} />
@@ -44,7 +46,7 @@ export function LotBottles({ lot }: { lot: LotBody }) {
                 {bottle.stands.filter((stand) => stand.count > 0).map((stand) => `; ${stand.count} in ${stand.place?.name ?? 'no named place'}`)}
               </p>
               <dl className="type-label flex flex-wrap gap-x-6 pt-1 text-ink2">
-                {figuresOf(bottle, lot).map((figure) => (
+                {figuresOf(bottle, lot, money).map((figure) => (
                   <div key={figure.name} className="min-w-0">
                     <dt>{figure.name}</dt>
                     <dd className="font-semibold text-ink">

@@ -12,6 +12,7 @@ import { Button, LinkButton } from '@/components/ui/Button';
 import { Facts, type Fact } from '@/components/ui/Facts';
 import { Haze } from '@/components/ui/Haze';
 import { ErrorState, FormError } from '@/components/ui/Notice';
+import { useMoney } from '@/components/ui/money';
 import { useNow } from '@/components/ui/now';
 import { GroupBar, PageHead } from '@/components/ui/Page';
 import { gravityText } from '@/components/ui/units';
@@ -24,13 +25,14 @@ import { Caution, Lifted } from './Caution';
 import { EditLot } from './EditLot';
 import { LotBottles } from './LotBottles';
 import { Serve } from './Serve';
-import { costWords, dayWords, leftWords, OPENING_WORDS, SPARKLE_WORDS, strengthWords } from './words';
+import { costWords, dayWords, HOW_COUNTED, leftWords, OPENING_WORDS, SPARKLE_WORDS, strengthWords } from './words';
 
 /** One lot of the cellar book. */
 export function LotPage({ id }: { id: string }) {
   const { lot, error, retry } = useLot(id);
   const { me, may } = useMe();
   const now = useNow();
+  const { money } = useMoney();
   const [opened, setOpened] = useState<'serve' | 'edit' | null>(null);
   if (error && !lot) {
     return (
@@ -64,7 +66,7 @@ export function LotPage({ id }: { id: string }) {
         </LinkButton>
       </PageHead>
       <Caution lot={lot} mayLift={may('lots.override')} />
-      <Facts facts={factsOf(lot, day)} columns="grid-cols-2 strip:grid-cols-4 wide:grid-cols-8" />
+      <Facts facts={factsOf(lot, day, money)} columns="grid-cols-2 strip:grid-cols-4 wide:grid-cols-8" />
       {lot.note && <p className="type-body border-b px-(--margin) py-2 break-words">{lot.note}</p>}
       <div className="border-b px-(--margin) py-2">
         <Photos place={{ lot: lot.id }} on={{ lot: lot.id }} />
@@ -95,16 +97,16 @@ export function LotPage({ id }: { id: string }) {
   );
 }
 
-function factsOf(lot: LotBody, day: (at: string) => string): Fact[] {
+function factsOf(lot: LotBody, day: (at: string) => string, money: (amount: number) => string): Fact[] {
   return [
-    { name: 'left', says: `${lot.counts.left} of ${lot.counts.bottled}` },
+    { name: 'left', says: `${lot.counts.left} of ${lot.counts.bottled}`, how: HOW_COUNTED },
     { name: 'bottled', says: day(lot.bottled_at) },
     { name: 'ready from', says: lot.ready ? `${day(lot.ready_from)}, ready` : day(lot.ready_from), how: lot.how.ready },
     { name: 'sparkle', says: SPARKLE_WORDS[lot.sparkle], how: lot.how.sparkle },
     { name: 'strength', says: strengthWords(lot.abv_percent), how: lot.how.strength },
     { name: 'gravity', says: `${lot.original_gravity === null ? '?' : gravityText(lot.original_gravity)} to ${lot.final_gravity === null ? '?' : gravityText(lot.final_gravity)}`, how: lot.how.gravity },
-    { name: 'opened, given', says: `${lot.counts.opened}, ${lot.counts.given}` },
-    { name: 'cost a litre', says: costWords(lot), how: lot.how.cost },
+    { name: 'opened, given', says: `${lot.counts.opened}, ${lot.counts.given}`, how: HOW_COUNTED },
+    { name: 'cost a litre', says: costWords(lot, money), how: lot.how.cost },
   ];
 }
 

@@ -1,3 +1,5 @@
+import { how, type How } from '@/lib/core/how/how';
+import { SOURCES } from '@/lib/core/how/sources';
 import { dayName, wallTime } from '@/components/charts/zone';
 import type { LotSummary, OPENING_KINDS } from '@/lib/contracts/lots';
 
@@ -14,11 +16,11 @@ export function dayWords(at: string, timeZone: string, now: number): string {
 /** `6.7 %`, `6.4–6.9 %` where the span shows. */
 export const strengthWords = (abv: { lo: number; value: number; hi: number } | null): string => (abv === null ? 'not known' : `${abv.value.toFixed(1)} %`);
 
+/** Where a count of bottles comes from. */
+export const HOW_COUNTED: How = how('bottled: as the bench planned it when it was bottled; left: those, less what was written down as opened, given away, broken or gushed, and not put back', SOURCES.told);
+
 /** `2 of 8 left` */
 export const leftWords = (counts: LotSummary['counts']): string => (counts.left === 0 ? `none of ${counts.bottled} left` : `${counts.left} of ${counts.bottled} left`);
 
-/** Money without a currency: the cellar counts in its own. */
-export const money = (range: { lo: number; value: number; hi: number }): string => range.value.toFixed(2);
-
 /** `1.71`, `0.58 or more` where part of it was never told. */
-export const costWords = (lot: Pick<LotSummary, 'cost_per_litre' | 'cost_known'>): string => (lot.cost_per_litre ? `${money(lot.cost_per_litre)}${lot.cost_known ? '' : ' or more'}` : 'not told');
+export const costWords = (lot: Pick<LotSummary, 'cost_per_litre' | 'cost_known'>, money: (amount: number) => string): string => (lot.cost_per_litre ? `${money(lot.cost_per_litre.value)}${lot.cost_known ? '' : ' or more'}` : 'not told');

@@ -4,6 +4,7 @@ import { useId, useState } from 'react';
 import { typedNumber } from '@/components/batch/figures';
 import { Button } from '@/components/ui/Button';
 import { Field, Select } from '@/components/ui/Field';
+import { useMoney } from '@/components/ui/money';
 import { camelKeys } from '@/lib/contracts/case';
 import { bring, inputsOf } from '@/lib/core/must/line';
 import { about, exactly } from '@/lib/core/units/range';
@@ -56,6 +57,7 @@ const UNLABELLED = '[&>label]:heard-only gap-0.5!';
 /** One line of the sheet: what, how much, what it brings; the rest behind a word. */
 export function LineRow({ line, error, first, last, onChange, onMove, onRemove }: LineRowProps) {
   const [open, setOpen] = useState(false);
+  const { currency } = useMoney();
   const details = useId();
   const { ingredient } = line;
   const quantity = quantityOf(line);
@@ -136,7 +138,7 @@ export function LineRow({ line, error, first, last, onChange, onMove, onRemove }
               </option>
             ))}
           </Select>
-          <Field label={`Cost of one ${unitWord(line.unit, ingredient)}`} inputMode="decimal" autoComplete="off" value={line.cost} onChange={(event) => onChange({ ...line, cost: event.target.value })} />
+          <Field label={`Cost of one ${unitWord(line.unit, ingredient)}`} unit={currency} inputMode="decimal" autoComplete="off" value={line.cost} onChange={(event) => onChange({ ...line, cost: event.target.value })} />
           <Field className="col-span-full" label="Note" autoComplete="off" maxLength={300} value={line.note} onChange={(event) => onChange({ ...line, note: event.target.value })} />
           <p className="type-tick col-span-full text-ink2">
             {ingredient.status}: {ingredient.source}

@@ -1,5 +1,6 @@
 import type { ReactNode } from 'react';
 import { How } from '@/components/ui/How';
+import { useMoney } from '@/components/ui/money';
 import { Sentence } from '@/components/ui/Sentence';
 import { Spread } from '@/components/ui/Spread';
 import { State } from '@/components/ui/StateMark';
@@ -8,7 +9,7 @@ import type { How as HowAnswer } from '@/lib/core/how/how';
 import type { MustOutcome, MustResult } from '@/lib/core/must/sheet';
 import type { DrinkKind } from '@/lib/core/types';
 import { USUAL } from '@/components/batch/kinds';
-import { gravityEnds, gravityText, volumeText } from '@/components/ui/units';
+import { gravityEnds, gravityText, volumeEnds, volumeText } from '@/components/ui/units';
 import { ends, SWEET_WORDS } from './words';
 
 function Row({ name, says, between, how, children }: { name: string; says: string; between?: string | undefined; how: HowAnswer; children?: ReactNode }) {
@@ -107,6 +108,7 @@ function QuietNotes({ outcome }: { outcome: MustOutcome }) {
 
 /** What the must promises: the decision first, its figures below, each with its how. */
 export function Outcome({ result, kind, vesselL, missing }: { result: MustResult; kind: DrinkKind; vesselL: number | null; /** Lines not filled in yet. */ missing: number }) {
+  const { money } = useMoney();
   if (!result.ok) {
     return (
       <div className="px-(--margin) py-4">
@@ -155,9 +157,9 @@ export function Outcome({ result, kind, vesselL, missing }: { result: MustResult
         <How how={outcome.originalGravity.how} of="original gravity" />
       </div>
       <dl className="border-t">
-        <Row name="volume" says={volumeText(outcome.volumeL.value.value, 1)} between={spread(outcome.volumeL.value, 1)} how={outcome.volumeL.how} />
+        <Row name="volume" says={volumeText(outcome.volumeL.value.value, 1)} between={volumeEnds(outcome.volumeL.value)} how={outcome.volumeL.how} />
         <Row name="fills" says={volumeText(outcome.fillL.value.value, 1)} between="with its pulp" how={outcome.fillL.how} />
-        {neck && <Row name="headspace" says={`${neck.headspaceL.value.value.toFixed(1)} L`.replace('-', '−')} between={spread(neck.headspaceL.value, 1)} how={neck.headspaceL.how} />}
+        {neck && <Row name="headspace" says={volumeText(neck.headspaceL.value.value, 1)} between={volumeEnds(neck.headspaceL.value)} how={neck.headspaceL.how} />}
         <Row name="fermentable" says={`${Math.round(100 * outcome.fermentableShare.value.value)} %`} between={`${Math.round(100 * outcome.fermentableShare.value.lo)} to ${Math.round(100 * outcome.fermentableShare.value.hi)}`} how={outcome.fermentableShare.how} />
         <Row name="ends at" says={gravityText(outcome.finalGravity.value.value)} between={gravityEnds(outcome.finalGravity.value)} how={outcome.finalGravity.how} />
         <Row
@@ -172,7 +174,7 @@ export function Outcome({ result, kind, vesselL, missing }: { result: MustResult
         <Row name="nitrogen needed" says={`${Math.round(outcome.nitrogen.neededMgL.value.value)} mg/L`} between={spread(outcome.nitrogen.neededMgL.value, 0)} how={outcome.nitrogen.neededMgL.how} />
         <Row name="nitrogen given" says={`${Math.round(outcome.nitrogen.givenMgL.value.value)} mg/L`} between={spread(outcome.nitrogen.givenMgL.value, 0)} how={outcome.nitrogen.givenMgL.how} />
         <Row name="sulphite" says={`${Math.ceil(outcome.sulphiteMgPerL.value.hi)} mg/L`} between="at most, without the yeast’s own" how={outcome.sulphiteMgPerL.how} />
-        {outcome.cost.value.hi > 0 && <Row name="cost" says={outcome.cost.value.value.toFixed(2)} between={[spread(outcome.cost.value, 2), outcome.cost.known ? null : 'some lines have no cost'].filter(Boolean).join('; ')} how={outcome.cost.how} />}
+        {outcome.cost.value.hi > 0 && <Row name="cost" says={money(outcome.cost.value.value)} between={[spread(outcome.cost.value, 2), outcome.cost.known ? null : 'some lines have no cost'].filter(Boolean).join('; ')} how={outcome.cost.how} />}
       </dl>
       <QuietNotes outcome={outcome} />
     </div>

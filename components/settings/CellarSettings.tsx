@@ -11,6 +11,7 @@ import { useAct } from '@/components/ui/use-act';
 import { chooseCellar, useMe } from '@/lib/client/me';
 import { createCellar, deleteCellar, leaveCellar, updateCellar } from '@/lib/client/people';
 import type { MeBody } from '@/lib/contracts/people';
+import { CurrencyField } from './CurrencyField';
 import { ROLE_WORDS } from './roles';
 import { TimeZoneField, useDeviceZone } from './TimeZoneField';
 
@@ -20,19 +21,21 @@ function NameAndClock({ cellar }: { cellar: MeBody['cellar'] }) {
   const { busy, failed, fields, act } = useAct();
   const [name, setName] = useState(cellar.name);
   const [zone, setZone] = useState(cellar.time_zone);
-  const changed = name !== cellar.name || zone !== cellar.time_zone;
+  const [currency, setCurrency] = useState(cellar.currency);
+  const changed = name !== cellar.name || zone !== cellar.time_zone || currency !== cellar.currency;
   return (
     <form
       aria-label="This cellar"
       className={FORM}
       onSubmit={(event) => {
         event.preventDefault();
-        void act(() => updateCellar({ name, time_zone: zone }));
+        void act(() => updateCellar({ name, time_zone: zone, currency }));
       }}
     >
       <div className="flex flex-wrap gap-3">
         <Field label="name" value={name} maxLength={80} error={fields.name} className="flex-1 basis-56 strip:max-w-80" onChange={(event) => setName(event.target.value)} />
         <TimeZoneField value={zone} onChoose={setZone} error={fields.time_zone} hint="days and clock times of the calls and mails" className="flex-1 basis-56 strip:max-w-80" />
+        <CurrencyField value={currency} onChoose={setCurrency} error={fields.currency} className="flex-1 basis-56 strip:max-w-80" />
       </div>
       {failed && <FormError>{failed}</FormError>}
       <Button type="submit" look="first" disabled={busy || !changed} className="self-start">

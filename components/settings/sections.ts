@@ -16,7 +16,7 @@ export const SECTIONS: readonly Section[] = [
   { href: '/settings/profile', name: 'Profile', says: 'name, units, time zone, your data', of: 'You' },
   { href: '/settings/security', name: 'Sign-in', says: 'passphrase, mail address, second factor, where you are signed in', of: 'You' },
   { href: '/settings/tokens', name: 'API tokens', says: 'keys for your own programs', of: 'You' },
-  { href: '/settings/cellar', name: 'Cellar', says: 'its name and clock, your others, leave it, make another', of: 'The cellar' },
+  { href: '/settings/cellar', name: 'Cellar', says: 'its name, clock and currency, your others, leave it, make another', of: 'The cellar' },
   { href: '/settings/people', name: 'People', says: 'who shares it, in which role, who is invited', of: 'The cellar', needs: 'members.read' },
   { href: '/settings/shares', name: 'Share links', says: 'addresses that show one batch to anybody', of: 'The cellar', needs: 'shares.manage' },
   { href: '/settings/audit', name: 'Audit trail', says: 'who did what, when, from where', of: 'The cellar', needs: 'audit.read' },

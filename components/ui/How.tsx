@@ -1,5 +1,6 @@
 import type { How as HowAnswer } from '@/lib/core/how/how';
 import { Sentence } from './Sentence';
+import { gravityText, temperatureText, volumeText } from './units';
 
 /** How far a source may be trusted, as the reader is told. */
 const STATUS_WORDS: Record<HowAnswer['status'], string> = {
@@ -10,7 +11,17 @@ const STATUS_WORDS: Record<HowAnswer['status'], string> = {
   told: 'told by you',
 };
 
-const inputText = (value: number | string | null): string => (value === null ? 'not told' : typeof value === 'number' ? String(Number(value.toPrecision(6))).replace('-', '−') : value);
+const plain = (value: number): string => String(Number(value.toPrecision(6))).replace('-', '−');
+/** Units that a person may read otherwise. */
+const READ: Record<string, (value: number) => string> = { SG: (sg) => gravityText(sg), '°C': (celsius) => temperatureText(celsius), L: (litres) => volumeText(litres, 2) };
+
+/** An input with its unit, as the person reads it; a span of figures figure by figure. */
+function inputText(value: number | string | null, unit: string): string {
+  if (value === null) return 'not told';
+  const read = READ[unit];
+  if (typeof value === 'number') return read ? read(value) : `${plain(value)} ${unit}`.trim();
+  return read ? value.replace(/-?\d+(?:\.\d+)?/g, (figure) => read(Number(figure))) : `${value} ${unit}`.trim();
+}
 
 /** The answer itself: formula, inputs, source. */
 export function HowBody({ how }: { how: HowAnswer }) {
@@ -25,7 +36,7 @@ export function HowBody({ how }: { how: HowAnswer }) {
             <div key={input.name} className="contents">
               <dt>{input.name}</dt>
               <dd className="break-words text-ink">
-                {inputText(input.value)} {input.value === null ? '' : input.unit}
+                {inputText(input.value, input.unit)}
               </dd>
             </div>
           ))}

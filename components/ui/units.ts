@@ -59,13 +59,19 @@ export const hydrometerMarks = (units = chosen): readonly [string, string] => (u
 /** A difference of temperatures, which has no nought of its own. */
 export const temperatureSpan = (celsius: number, units = chosen): number => (units.temperature === 'f' ? celsius * 1.8 : celsius);
 
-/** `4.5 L`, `1.19 gal`. */
+/** `4.5 L`, `1.19 gal`; a real minus. */
 export function volumeText(litres: number, digits?: number, units = chosen): string {
   const { name, litres: per } = VOLUMES[units.volume];
   const value = litres / per;
   const asked = digits ?? (litres < 10 ? 2 : 1);
   // A gallon is about four litres: two decimals are a wine glass.
-  return `${Number(value.toFixed(units.volume === 'l' ? asked : 2))} ${name}`;
+  return minus(`${Number(value.toFixed(units.volume === 'l' ? asked : 2)) || 0} ${name}`);
+}
+
+/** `4.4 to 4.6 L`; undefined where both ends read the same. */
+export function volumeEnds({ lo, hi }: { lo: number; hi: number }, units = chosen): string | undefined {
+  const [from, to] = [volumeText(lo, 1, units), volumeText(hi, 1, units)];
+  return from === to ? undefined : `${from.split(' ')[0]} to ${to}`;
 }
 
 /** A gravity in a sentence: three decimals between 0.970 and 1.200, perhaps with its doubt. */

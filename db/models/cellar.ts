@@ -4,6 +4,8 @@ export class Cellar extends Model<InferAttributes<Cellar>, InferCreationAttribut
   declare id: CreationOptional<string>;
   declare name: string;
   declare timeZone: CreationOptional<string>;
+  /** ISO 4217; null: costs are figures alone. */
+  declare currency: CreationOptional<string | null>;
   declare createdAt: CreationOptional<Date>;
 
   static register(sequelize: Sequelize) {
@@ -12,6 +14,7 @@ export class Cellar extends Model<InferAttributes<Cellar>, InferCreationAttribut
         id: { type: DataTypes.UUID, primaryKey: true, defaultValue: DataTypes.UUIDV4 },
         name: DataTypes.TEXT,
         timeZone: DataTypes.TEXT,
+        currency: DataTypes.TEXT,
         createdAt: DataTypes.DATE,
       },
       { sequelize, tableName: 'cellars' },

@@ -53,7 +53,7 @@ export async function createCellar(form: { name: string; time_zone: string }): P
   await cellarChanged();
 }
 
-export async function updateCellar(form: { name?: string; time_zone?: string }): Promise<void> {
+export async function updateCellar(form: { name?: string; time_zone?: string; currency?: string | null }): Promise<void> {
   await sendJson('PATCH', '/cellar', form);
   await refresh(isPath('/me'));
 }

@@ -13,6 +13,9 @@ const celsius = z.number('must be a number').min(0, 'must be between 0 and 40 °
 /** Sugars that can be weighed out; a syrup tells its share of sugar. */
 export const WEIGHED_SUGARS = ['sucrose', 'glucose', 'glucose_monohydrate', 'fructose', 'honey', 'malt', 'syrup'] as const;
 
+/** Kinds and sizes in one plan: each of the eight kinds in three sizes. */
+export const MOST_BOTTLE_ROWS = 24;
+
 export const bottleForm = z.object({
   /** The form's own name for this row. */
   key: z.string().regex(/^[A-Za-z0-9_-]{1,40}$/),
@@ -42,7 +45,7 @@ export const benchForm = z.object({
   /** What is in the vessel, measured; null: as the log has it. */
   volume_l: litres(0.05).nullable().default(null),
   losses_l: litres(0).default(0),
-  bottles: z.array(bottleForm).min(1, 'choose a bottle').max(12).refine((bottles) => new Set(bottles.map((bottle) => bottle.key)).size === bottles.length, 'two rows have the same key'),
+  bottles: z.array(bottleForm).min(1, 'choose a bottle').max(MOST_BOTTLE_ROWS, `at most ${MOST_BOTTLE_ROWS} kinds and sizes in one plan`).refine((bottles) => new Set(bottles.map((bottle) => bottle.key)).size === bottles.length, 'two rows have the same key'),
   cellar_c: celsius,
   /** The warmest place the bottles will ever stand. */
   warmest_store_c: celsius,

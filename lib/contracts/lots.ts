@@ -39,7 +39,7 @@ export const lotBottleSchema = z.object({
   cellar_bar: z.number(),
   warm_bar: z.number(),
   worst_bar: z.number(),
-  how: z.object({ cellar: howSchema, warm: howSchema, worst: howSchema }),
+  how: z.object({ cellar: howSchema, warm: howSchema, worst: howSchema, holds: howSchema }),
   bottled: z.number().int(),
   left: z.number().int(),
   stands: z.array(z.object({ place: placeName, count: z.number().int() })),

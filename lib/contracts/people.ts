@@ -38,6 +38,9 @@ export const timeZone = z.string().max(64).refine((value) => {
   }
 }, 'is not a time zone, such as Europe/Lisbon');
 
+/** An ISO 4217 currency that this machine knows. */
+export const currency = z.string().refine((value) => Intl.supportedValuesOf('currency').includes(value), 'is not a currency, such as EUR');
+
 /** The tongues that the texts exist in. */
 export const LOCALES = ['en'] as const;
 
@@ -46,7 +49,7 @@ export const unitsSchema = z.object({ gravity: z.enum(GRAVITY_UNITS), temperatur
 /** `GET /api/v1/me`: who asks, and in which cellar. */
 export const meSchema = z.object({
   person: z.object({ id, name: z.string(), email: z.string(), time_zone: z.string(), locale: z.enum(LOCALES), units: unitsSchema }),
-  cellar: z.object({ id, name: z.string(), time_zone: z.string(), role }),
+  cellar: z.object({ id, name: z.string(), time_zone: z.string(), /** What costs are counted in, ISO 4217; null: never told. */ currency: z.string().nullable(), role }),
   cellars: z.array(z.object({ id, name: z.string(), role })),
   /** What the person may do here, for showing or hiding a button; the server decides again. */
   may: z.array(z.string()),
@@ -73,7 +76,7 @@ export type CreateCellar = z.infer<typeof createCellar>;
 /** A cellar for somebody who has no account yet. */
 export const foundCellar = createCellar.extend({ email });
 export type FoundCellar = z.infer<typeof foundCellar>;
-export const updateCellar = z.object({ name: line(80).optional(), time_zone: timeZone.optional() });
+export const updateCellar = z.object({ name: line(80).optional(), time_zone: timeZone.optional(), currency: currency.nullable().optional() });
 export const deleteCellar = z.object({ name: z.string().max(200), passphrase: given });
 export const madeCellar = z.object({ id });
 

@@ -1,5 +1,5 @@
 /** Bottles and closures, and what they are taken to hold until the person confirms the maker's figure. */
-import type { Source } from '../how/how';
+import { how, type How, type Source } from '../how/how';
 import { practice } from '../how/sources';
 
 export const BOTTLE_KINDS = ['beer', 'heavy_beer', 'swing_top', 'sparkling_wine', 'still_wine', 'odd_glass', 'pet', 'keg'] as const;
@@ -152,6 +152,17 @@ export function holds(choice: BottleChoice): Holds {
   return glass <= cap.rating
     ? { rating: glass, confirmed, source: confirmed ? 'the maker’s figure, confirmed by the person' : bottle.source, status: confirmed ? 'told' : bottle.status }
     : { rating: cap.rating, confirmed, source: cap.source, status: cap.status };
+}
+
+/** Where the figure comes from that a bottle is held against. */
+export function howOfHolds(choice: Pick<BottleChoice, 'kind' | 'closure' | 'confirmedBar'>): How {
+  const [bottle, cap] = [BOTTLES[choice.kind], CLOSURE_CATALOGUE[choice.closure]];
+  const told = (rating: Rating) => (rating === 'never' ? 'never under pressure' : `${rating.toFixed(1)} bar`);
+  return how('the weaker of bottle and closure; the maker’s figure, once somebody has read it, in place of the bottle’s usual one, never of the closure’s', holds({ ...choice, sizeMl: 0 }), [
+    [`usual for a ${bottle.name}`, told(bottle.rating), ''],
+    [`usual for a ${cap.name}`, told(cap.rating), ''],
+    ['maker’s figure', choice.confirmedBar, 'bar'],
+  ]);
 }
 
 /** Cautions for a bench with pressure on it, in the order they are needed. */

@@ -44,6 +44,16 @@ export function pressureByDay(bottle: InBottle, bottledAt: Instant, celsius: num
   return Array.from({ length: days + 1 }, (_, day) => ({ at: bottledAt + day * DAY, ...pressureAfter(bottle, day, celsius) }));
 }
 
+/** How the weeks are reckoned. */
+export const howOfWeeks = (bottle: InBottle, celsius: number): How =>
+  how('gas there already + that of the sugar for fizz, 97 % gone in two weeks at 20 °C, + that of what may still ferment, slower; each day its pressure as in the table, pace 2.2 times for 10 °C', SOURCES.ownRule, [
+    ['there already, at most', bottle.residualVolumes, 'volumes'],
+    ['from the sugar, at most', bottle.addedVolumes, 'volumes'],
+    ['may still ferment, at most', bottle.remainingPoints, 'points'],
+    ['strength, with what the sugar adds', bottle.drink.abvPercent, '% vol'],
+    ['stands at', celsius, '°C'],
+  ]);
+
 /** The day on which the worst case passes a rating; null where it does not within the days looked at. */
 export function overRatingFrom(points: readonly WeekPoint[], ratedBar: number): Instant | null {
   return points.find((p) => p.worstBar > ratedBar)?.at ?? null;

@@ -45,7 +45,7 @@ function pressurePoint(volumes: number, celsius: number, request: BenchRequest, 
   return { bar: roundUp(Math.max(0, gaugeBar), 0.1), celsius, how: origin };
 }
 
-function pictureOf(request: BenchRequest, bottle: BenchBottle, count: number, residual: Range, remaining: RangeFigure, litres: number): BottlePicture & { abvAdded: number } {
+function pictureOf(request: BenchRequest, bottle: BenchBottle, count: number, residual: Range, remaining: RangeFigure, litres: number): BottlePicture {
   const sugar = request.priming.way === 'weighed' ? request.priming.sugar : DROPS;
   const gPerL = sugarGPerL(request, bottle, residual.hi, litres);
   const added = gasFromSugar(sugar, gPerL);
@@ -77,7 +77,7 @@ function pictureOf(request: BenchRequest, bottle: BenchBottle, count: number, re
     cellar: pressurePoint(volumes.hi, request.cellarC, request, abvAdded),
     warm: pressurePoint(volumes.hi, request.warmestStoreC, request, abvAdded),
     worst: pressurePoint(worstVolumes, request.warmestStoreC, request, abvAdded),
-    abvAdded,
+    abvAddedPercent: abvAdded,
   };
 }
 
@@ -98,12 +98,12 @@ export function work(request: BenchRequest): Worked {
   );
   const filled = pictures.filter((p) => p.count > 0);
   const problems = [...batchProblems(request, filled), ...filled.flatMap((p) => bottleProblems(request, p))];
-  const abvAddedPercent = Math.max(0, ...filled.map((p) => p.abvAdded));
+  const abvAddedPercent = Math.max(0, ...filled.map((p) => p.abvAddedPercent));
   const worstBar = Math.max(0, ...filled.map((p) => p.worst.bar));
   return {
     picture: {
       plan,
-      bottles: filled.map(({ abvAdded: _abvAdded, ...picture }) => picture),
+      bottles: filled,
       residual,
       remaining,
       cautions: worstBar > 0.5 ? PRESSURE_CAUTIONS : [],

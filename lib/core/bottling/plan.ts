@@ -1,4 +1,6 @@
 /** How a volume goes into bottles of several sizes: "five of 750 ml and the rest into a small one". */
+import { how, type How } from '../how/how';
+import { SOURCES } from '../how/sources';
 import { roundDown } from '../units/rounding';
 
 /** A size on the bench. `atHand` null: as many as it takes. */
@@ -53,3 +55,11 @@ export function planBottles(volumeL: number, lossesL: number, sizes: readonly Si
     bottles: filled.reduce((sum, f) => sum + f.count, 0),
   };
 }
+
+/** How the plan came about. */
+export const howOfPlan = (volumeL: number, plan: BottlePlan, sizes: readonly SizeAtHand[]): How =>
+  how('what is in the vessel less what stays on the lees, whole bottles only, the sizes in the order they stand in and as many as are at hand; what fills no bottle is over', SOURCES.ownRule, [
+    ['in the vessel', Number(volumeL.toFixed(2)), 'L'],
+    ['left on lees', Number(plan.lostL.toFixed(2)), 'L'],
+    ...sizes.map(({ sizeMl, atHand }) => ['size, and how many are at hand', `${sizeMl} ml, ${atHand ?? 'enough'}`, ''] as const),
+  ]);

@@ -1,5 +1,5 @@
 /** Sugar for sparkle: what each kind gives, by weight, as syrup or as drops. */
-import { figure, how, type Figure, type RangeFigure, type Source } from '../how/how';
+import { figure, how, type Figure, type How, type RangeFigure, type Source } from '../how/how';
 import { memory, practice, SOURCES } from '../how/sources';
 import { exactly, type Range } from '../units/range';
 import { roundDown } from '../units/rounding';
@@ -101,6 +101,20 @@ export function doseFor(wantedVolumes: number, residualVolumes: number, sugar: P
 
 /** Strength that priming adds, % vol: ethanol by stoichiometry at full yield, 789.24 g/L; the upper end. */
 export const abvFromPriming = (sugar: PrimingSugar, gPerL: number): number => (100 * gPerL * sugar.co2PerG.hi * (46.069 / 44.009)) / 789.24;
+
+/** How the strength that the sugar for fizz adds comes about. */
+export const howOfAbvAdded = (sugar: PrimingSugar, abvAddedPercent: number): How =>
+  how('grams a litre, at most, × CO2 from 1 g × 46.069 ÷ 44.009 g of alcohol for a gram of CO2 ÷ 789.24 g/L, all of it fermented', SOURCES.stoichiometry, [
+    ['CO2 from 1 g of the sugar, at most', sugar.co2PerG.hi, 'g'],
+    ['added, at most', Number(abvAddedPercent.toFixed(2)), '% vol'],
+  ]);
+
+/** How the drops in all come about. */
+export const howOfDrops = (gramsEach: Range, totalDrops: number): How =>
+  how('drops in each × bottles of that size, all sizes; the gas is reckoned with the heaviest drop', SOURCES.practice, [
+    ['drops in all', totalDrops, ''],
+    ['one drop weighs', `${gramsEach.value} (${gramsEach.lo} to ${gramsEach.hi})`, 'g'],
+  ]);
 
 /** Sparkle by name, volumes wanted: common practice. Dry (still) gets no sugar. */
 export const SPARKLES = {

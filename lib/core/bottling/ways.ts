@@ -1,7 +1,7 @@
 /** Ways out of a stop: each is a changed request, worked through again, with its own worst case. */
 import { exactly, type Range } from '../units/range';
 import { roundDown, roundTo } from '../units/rounding';
-import { figure, how } from '../how/how';
+import { figure, how, type How } from '../how/how';
 import { SOURCES } from '../how/sources';
 import { VOLUMES_PER_POINT } from '../gas/gas';
 import type { BenchBottle, BenchRequest, WayOut } from './bench';
@@ -16,6 +16,13 @@ const lowestRating = (request: BenchRequest, filled: readonly { key: string }[])
   const pressures = ratings.filter((r): r is Exclude<Rating, 'never'> => r !== 'never');
   return ratings.length > pressures.length || pressures.length === 0 ? 'never' : ratedBar(Math.min(...pressures));
 };
+
+/** How the worst case of a way out came about. */
+export const howOfWay = (way: WayOut): How =>
+  how('the bench worked through again with this change: gas as asked + 0.51 volumes for each point that may still ferment, in the warmest place, against the weakest of the bottles; a keg’s valve opens at its rating', SOURCES.ownRule, [
+    ['at worst', way.worstBar, 'bar'],
+    ['against', way.rated === 'never' ? 'still drink' : way.rated, way.rated === 'never' ? '' : 'bar'],
+  ]);
 
 /** Nothing is wrong but, at most, that nobody has read the maker's figure: the bench goes on asking for it. */
 const onlyUnconfirmed = (tried: Worked): boolean => tried.problems.every((p) => p.kind === 'rating_not_confirmed');

@@ -24,14 +24,15 @@ export async function createCellar(personId: string, input: CreateCellar): Promi
   });
 }
 
-/** Changes the cellar's name and time zone. */
-export async function updateCellar(actor: Actor, input: { name?: string | undefined; time_zone?: string | undefined }): Promise<void> {
+/** Changes the cellar's name, time zone and currency. */
+export async function updateCellar(actor: Actor, input: { name?: string | undefined; time_zone?: string | undefined; currency?: string | null | undefined }): Promise<void> {
   authorize(actor, 'cellar.manage');
   await inTransaction(async (transaction) => {
     const cellar = await lockCellar(actor.cellarId, transaction);
-    const before = { name: cellar.name, time_zone: cellar.timeZone };
-    await cellar.update({ name: input.name ?? cellar.name, timeZone: input.time_zone ?? cellar.timeZone }, { transaction });
-    await auditBy(actor, 'cellar.updated', cellar.id, { from: before, to: { name: cellar.name, time_zone: cellar.timeZone } }, transaction);
+    const shown = () => ({ name: cellar.name, time_zone: cellar.timeZone, currency: cellar.currency });
+    const before = shown();
+    await cellar.update({ name: input.name ?? cellar.name, timeZone: input.time_zone ?? cellar.timeZone, ...(input.currency !== undefined && { currency: input.currency }) }, { transaction });
+    await auditBy(actor, 'cellar.updated', cellar.id, { from: before, to: shown() }, transaction);
     await notifyChange({ cellar: cellar.id, kind: 'member', batch: null }, transaction);
   });
 }

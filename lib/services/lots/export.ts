@@ -1,3 +1,4 @@
+import { Cellar } from '@/db/models';
 import { findLots, type LotRow } from '@/db/queries/lots';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
@@ -23,9 +24,9 @@ export function cell(value: string | number | null): string {
 
 const day = (at: string) => at.slice(0, 10);
 
-const COLUMNS = ['code', 'name', 'batch', 'kind', 'bottled', 'ready_from', 'sparkle', 'litres', 'original_gravity', 'final_gravity', 'abv_percent', 'bottled_count', 'left', 'opened', 'given', 'broken', 'gushed', 'places', 'score', 'tastings', 'cost_per_litre', 'cost_known', 'caution', 'override_reason', 'next_time', 'note'] as const;
+const COLUMNS = ['code', 'name', 'batch', 'kind', 'bottled', 'ready_from', 'sparkle', 'litres', 'original_gravity', 'final_gravity', 'abv_percent', 'bottled_count', 'left', 'opened', 'given', 'broken', 'gushed', 'places', 'score', 'tastings', 'cost_per_litre', 'currency', 'cost_known', 'caution', 'override_reason', 'next_time', 'note'] as const;
 
-function line(row: LotRow, now: number): string {
+function line(row: LotRow, currency: string | null, now: number): string {
   const lot = presentLot(row, now);
   const values: Record<(typeof COLUMNS)[number], string | number | null> = {
     code: lot.code,
@@ -49,6 +50,7 @@ function line(row: LotRow, now: number): string {
     score: lot.tastings.score?.mean ?? null,
     tastings: lot.tastings.count,
     cost_per_litre: lot.cost_per_litre && Number(lot.cost_per_litre.value.toFixed(2)),
+    currency: lot.cost_per_litre && currency,
     cost_known: lot.cost_per_litre && (lot.cost_known ? 'yes' : 'no'),
     caution: lot.caution,
     override_reason: row.overrideReason,
@@ -62,5 +64,6 @@ function line(row: LotRow, now: number): string {
 export async function exportLots(actor: Actor, query: LotQuery, clock: Clock = systemClock): Promise<string> {
   authorize(actor, 'lots.read');
   const rows = await findLots({ ...lotFilter(actor, query, new Date(clock.now())), limit: MOST });
-  return [COLUMNS.join(','), ...rows.map((row) => line(row, clock.now()))].join('\r\n') + '\r\n';
+  const { currency } = await Cellar.findByPk(actor.cellarId, { rejectOnEmpty: true });
+  return [COLUMNS.join(','), ...rows.map((row) => line(row, currency, clock.now()))].join('\r\n') + '\r\n';
 }

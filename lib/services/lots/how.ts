@@ -1,8 +1,10 @@
 import { snakeKeys } from '@/lib/contracts/case';
 import type { LotBody } from '@/lib/contracts/lots';
+import { howOfHolds } from '@/lib/core/bottling/bottles';
 import { drinkPressure } from '@/lib/core/bottling/co2';
 import { how } from '@/lib/core/how/how';
 import { practice, SOURCES } from '@/lib/core/how/sources';
+import type { LotBottle } from '@/db/models';
 import type { LotRow } from '@/db/queries/lots';
 import type { KeptBench, KeptCost, KeptPressure } from './kept';
 import { LIGHT_FROM, SPARKLING_FROM } from './sparkle';
@@ -48,11 +50,12 @@ export function howOfLot(row: Pick<LotRow, 'originalGravity' | 'finalGravity' | 
   };
 }
 
-/** Where the pressures of a bottle come from: the gas in it at the two temperatures that the bench judged for. */
-export function howOfPressure({ shown, drink }: KeptBench, pressure: KeptPressure): LotBody['bottles'][number]['how'] {
+/** Where the pressures of a bottle come from, the gas in it at the two temperatures that the bench judged for, and what it holds. */
+export function howOfPressure({ shown, drink }: KeptBench, pressure: KeptPressure, bottle: Pick<LotBottle, 'kind' | 'closure' | 'ratingBar' | 'ratingConfirmed'>): LotBody['bottles'][number]['how'] {
   return {
     cellar: snakeKeys(drinkPressure(pressure.volumes, shown.cellar_c, drink).how),
     warm: snakeKeys(drinkPressure(pressure.volumes, shown.warmest_store_c, drink).how),
     worst: snakeKeys(drinkPressure(pressure.worstVolumes, shown.warmest_store_c, drink).how),
+    holds: snakeKeys(howOfHolds({ kind: bottle.kind, closure: bottle.closure, confirmedBar: bottle.ratingConfirmed ? bottle.ratingBar : null })),
   };
 }

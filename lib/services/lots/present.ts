@@ -63,7 +63,7 @@ export function presentWhole(row: LotRow, parts: LotParts, now: number): LotBody
         cellar_bar: pressure.cellarBar,
         warm_bar: pressure.warmBar,
         worst_bar: pressure.worstBar,
-        how: howOfPressure(bench, pressure),
+        how: howOfPressure(bench, pressure, bottle),
         bottled: bottle.count,
         left: stands.reduce((sum, stand) => sum + stand.count, 0),
         stands,
