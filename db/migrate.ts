@@ -10,6 +10,7 @@ import * as messages from './migrations/0008-messages';
 import * as rooms from './migrations/0009-rooms';
 import * as archiveAndWebhooks from './migrations/0010-archive-and-webhooks';
 import * as indexes from './migrations/0011-indexes';
+import * as liftedCautions from './migrations/0012-lifted-cautions';
 import * as currency from './migrations/0013-currency';
 import type { Migration, Run } from './migrations/types';
 
@@ -25,6 +26,7 @@ const MIGRATIONS: ReadonlyArray<{ name: string; migration: Migration }> = [
   { name: '0009-rooms', migration: rooms },
   { name: '0010-archive-and-webhooks', migration: archiveAndWebhooks },
   { name: '0011-indexes', migration: indexes },
+  { name: '0012-lifted-cautions', migration: liftedCautions },
   { name: '0013-currency', migration: currency },
 ];
 

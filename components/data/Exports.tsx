@@ -47,7 +47,7 @@ export function Exports() {
         <a href="/api/v1/archive.schema.json" className="underline underline-offset-2">
           JSON Schema
         </a>
-        . Secrets of sensors, tokens and links stay here, and so does the trail, which has an export of its own. Cells of a CSV that a spreadsheet would run begin with a quote; bringing them in takes it off again.
+        . Addresses and secrets of sensors, tokens, webhooks, links and invitations stay here, and so does the trail, which has an export of its own; what was taken back stays away. Cells of a CSV that a spreadsheet would run begin with a quote; bringing them in takes it off again.
       </p>
     </section>
   );

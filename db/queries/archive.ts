@@ -1,5 +1,6 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import { database } from '../client';
+import { Sensor } from '../models';
 
 export interface FloatStay {
   sensorId: number;
@@ -33,20 +34,35 @@ export interface ArchiveReading {
 
 const UTC = (column: string) => `to_char(${column} at time zone 'utc', 'YYYY-MM-DD"T"HH24:MI:SS.US"Z"')`;
 
-export interface ArchiveSensor {
-  id: number;
-  name: string;
-  createdAt: Date;
+/** The sensors of the cellar, those that were taken away too; or those that were in one batch. */
+export function archiveSensors(cellarId: string, batchId: string | null): Promise<Sensor[]> {
+  const inIt = (table: string) => `exists (select 1 from ${table} x where x.sensor_id = s.id and x.batch_id = $batchId::uuid)`;
+  const which = batchId === null ? '$batchId::uuid is null' : `(${inIt('assignments')} or ${inIt('probe_assignments')})`;
+  return database().query(`select s.* from sensors s where s.cellar_id = $cellarId and ${which} order by s.created_at, s.id`, { bind: { cellarId, batchId }, model: Sensor, mapToModel: true });
 }
 
-/** Sensors with anything to take along: of the cellar, or those that were in one batch. */
-export function archiveSensors(cellarId: string, batchId: string | null): Promise<ArchiveSensor[]> {
-  const has = (table: string, more = '') => `exists (select 1 from ${table} x where x.sensor_id = s.id${more})`;
-  const inIt = ' and ($batchId::uuid is null or x.batch_id = $batchId::uuid)';
-  const alone = batchId === null ? ` or ${has('calibrations')} or ${has('calibration_points')} or ${has('readings')}` : '';
-  return database().query<ArchiveSensor>(
-    `select s.id, s.name, s.created_at as "createdAt" from sensors s where s.cellar_id = $cellarId and (${has('assignments', inIt)} or ${has('probe_assignments', inIt)}${alone}) order by s.created_at, s.id`,
-    { bind: { cellarId, batchId }, type: QueryTypes.SELECT },
+export interface ArchiveRefusal {
+  received_at: string;
+  road: 'mqtt' | 'http';
+  reason: string;
+  /** Base64. */
+  body: string;
+}
+
+/** What a sensor sent and was refused, while that is kept. */
+export function refusalsOf(sensorId: number): Promise<ArchiveRefusal[]> {
+  return database().query<ArchiveRefusal>(`select ${UTC('received_at')} as received_at, road, reason, replace(encode(body, 'base64'), E'\\n', '') as body from refusals where sensor_id = $sensorId order by received_at, id`, {
+    bind: { sensorId },
+    type: QueryTypes.SELECT,
+  });
+}
+
+export async function insertRefusals(sensorId: number, rows: readonly ArchiveRefusal[], transaction: Transaction): Promise<void> {
+  if (rows.length === 0) return;
+  await database().query(
+    `insert into refusals (sensor_id, received_at, road, reason, body)
+     select $sensorId, r.received_at, r.road, r.reason, decode(r.body, 'base64') from jsonb_to_recordset($rows::jsonb) as r (received_at timestamptz, road text, reason text, body text)`,
+    { bind: { sensorId, rows: JSON.stringify(rows) }, transaction },
   );
 }
 
@@ -93,6 +109,16 @@ export async function insertImported(sensorId: number, rows: readonly ArchiveRea
     { bind: { sensorId, rows: JSON.stringify(rows) }, type: QueryTypes.SELECT, transaction },
   );
   return result?.n ?? 0;
+}
+
+/** Whether a sensor of these that is still in use has spoken here: only the ingest writes its latest. */
+export async function heardHere(sensorIds: readonly number[], transaction: Transaction): Promise<boolean> {
+  const [row] = await database().query<{ heard: boolean }>(`select exists (select 1 from sensor_latest l join sensors s on s.id = l.sensor_id where s.removed_at is null and s.id = any($ids::int[])) as heard`, {
+    bind: { ids: `{${sensorIds.join(',')}}` },
+    type: QueryTypes.SELECT,
+    transaction,
+  });
+  return row?.heard ?? false;
 }
 
 /** Takes an import's readings away. */

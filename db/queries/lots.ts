@@ -227,14 +227,18 @@ export interface LiftedRow {
   by: { id: string; name: string } | null;
 }
 
-/** Cautions that were taken off a lot, newest first: the trail is their history. */
+/** Cautions that were taken off a lot, newest first. */
 export function liftedOfLot(cellarId: string, lotId: string, transaction?: Transaction): Promise<LiftedRow[]> {
   return database().query<LiftedRow>(
-    `select a.at, a.detail->>'caution' as caution, a.detail->>'reason' as reason, case when p.id is not null then json_build_object('id', p.id, 'name', p.name) end as by
-     from audit a left join people p on p.id = a.person_id
-     where a.cellar_id = $cellarId and a.subject = $lotId and a.action = 'lot.caution-lifted' order by a.at desc, a.id desc limit 50`,
+    `select c.at, c.caution, c.reason, case when p.id is not null then json_build_object('id', p.id, 'name', p.name) end as by
+     from caution_lifts c left join people p on p.id = c.person_id
+     where c.cellar_id = $cellarId and c.lot_id = $lotId order by c.at desc, c.id limit 50`,
     { bind: { cellarId, lotId }, type: QueryTypes.SELECT, transaction },
   );
+}
+
+export async function writeLift(lift: { cellarId: string; lotId: string; caution: string; reason: string; personId: string; at: Date }, transaction: Transaction): Promise<void> {
+  await database().query(`insert into caution_lifts (cellar_id, lot_id, caution, reason, person_id, at) values ($cellarId, $lotId, $caution, $reason, $personId, $at)`, { bind: lift, transaction });
 }
 
 export interface OpeningRow {

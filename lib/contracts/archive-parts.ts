@@ -2,18 +2,20 @@ import { z } from 'zod';
 import { BOTTLE_KINDS, CLOSURES } from '../core/bottling/bottles';
 import { RULE_NAMES } from '../core/alerts/rules';
 import { MEANS } from '../core/alerts/telling';
-import { CALL_NAMES, DRINK_KINDS, VERDICTS } from '../core/types';
+import { CALL_NAMES, DRINK_KINDS } from '../core/types';
+import { ALERT_STATES } from './alerts';
+import { bench, cost, evidence, pressure, standing } from './archive-shapes';
 import { assessmentSchema } from './assessment';
 import { revisionList } from './batches';
 import { ingredientForm, yeastForm } from './catalogue';
 import { gravity, id, line, text, timestamp } from './common';
 import { rangeSchema } from './figures';
-import { lotSchema, LOT_SPARKLES, OPENING_KINDS } from './lots';
+import { LOT_SPARKLES, OPENING_KINDS } from './lots';
 import { mustSheetSchema } from './musts';
 import { SPARKLES_FOUND } from './tastings';
 
 /** What stands in the archive beside batches and sensors: a list a part, in the order in which they come back. */
-export type PartName = 'places' | 'musts' | 'must_versions' | 'ingredients' | 'links' | 'corrections' | 'finings' | 'lots' | 'bottles' | 'stands' | 'moves' | 'openings' | 'tastings' | 'jobs' | 'mutes' | 'rules' | 'turns' | 'choices' | 'limits' | 'verdicts' | 'alerts';
+export type PartName = 'places' | 'musts' | 'must_versions' | 'ingredients' | 'links' | 'corrections' | 'finings' | 'lots' | 'bottles' | 'stands' | 'moves' | 'openings' | 'tastings' | 'lifts' | 'jobs' | 'mutes' | 'rules' | 'turns' | 'choices' | 'limits' | 'verdicts' | 'alerts' | 'told' | 'standings';
 
 /** `id` is its own; `refers`: the id of something in the archive; a person stands there by name; a `key` is kept where it names something of the archive. */
 type Is = 'id' | 'value' | 'time' | 'refers' | 'person' | 'people' | 'key';
@@ -32,6 +34,8 @@ export interface ArchivePart {
   order: string;
   /** Which rows, besides that they are the cellar's. */
   where?: string;
+  /** How its rows are the cellar's where they do not say so themselves, `$cellarId`. */
+  ofCellar?: string;
   /** Which rows go with one batch, `$batchId`; null: none. */
   ofBatch: string | null;
   /** What the cellar has already stays as it is. */
@@ -74,23 +78,6 @@ const byId = 't.created_at, t.id';
 const batchIs = 't.batch_id = $batchId';
 const ofItsLots = 't.lot_id in (select id from lots where batch_id = $batchId)';
 const lotsOrder = '(select l.created_at from lots l where l.id = t.lot_id), t.lot_id';
-
-/** A call as an alert keeps it: the core's own words, times in ms. */
-const evidence = z.object({
-  verdict: z.enum(VERDICTS),
-  kind: z.string().nullable(),
-  since: number.nullable(),
-  expectedAt: number.nullable().optional(),
-  headline: z.string(),
-  reason: z.string(),
-  act: z.string().nullable(),
-  changesIt: z.string().nullable(),
-  evidence: z.array(z.object({ name: z.string(), value: number, threshold: number.nullable(), unit: z.string() })),
-});
-
-const bench = z.object({ shown: lotSchema.shape.bench, drink: z.object({ abvPercent: number, sugarGPerL: number }) });
-const pressure = z.object({ volumes: number, worstVolumes: number, cellarBar: number, warmBar: number, worstBar: number });
-const cost = z.object({ must: rangeSchema.nullable().optional(), known: z.boolean().optional(), other: number.nullable().optional() });
 
 export const ARCHIVE_PARTS: Readonly<Record<PartName, ArchivePart>> = {
   places: {
@@ -216,6 +203,12 @@ export const ARCHIVE_PARTS: Readonly<Record<PartName, ArchivePart>> = {
     where: 't.removed_at is null',
     ofBatch: ofItsLots,
   },
+  lifts: {
+    table: 'caution_lifts',
+    fields: { lot: refers('lot_id'), caution: value('caution', text(1000)), reason: value('reason', text(1000)), by: person('person_id'), at: time('at') },
+    order: `t.at, ${lotsOrder}, t.id`,
+    ofBatch: ofItsLots,
+  },
   jobs: {
     table: 'jobs',
     fields: {
@@ -286,7 +279,6 @@ export const ARCHIVE_PARTS: Readonly<Record<PartName, ArchivePart>> = {
     order: 't.at, t.id',
     ofBatch: batchIs,
   },
-  // Those that are over; what still goes on is judged anew where it comes to.
   alerts: {
     table: 'alerts',
     fields: {
@@ -295,7 +287,7 @@ export const ARCHIVE_PARTS: Readonly<Record<PartName, ArchivePart>> = {
       call: value('call', z.enum(CALL_NAMES)),
       kind: maybe('kind', z.string().max(60)),
       level: value('level', z.enum(['act', 'check', 'know'])),
-      state: value('state', z.literal('resolved')),
+      state: value('state', z.enum(ALERT_STATES)),
       since: time('since'),
       opened_at: time('opened_at'),
       acknowledged_at: maybeTime('acknowledged_at'),
@@ -307,7 +299,32 @@ export const ARCHIVE_PARTS: Readonly<Record<PartName, ArchivePart>> = {
       evidence: whole('evidence', evidence),
     },
     order: 't.opened_at, t.id',
-    where: "t.state = 'resolved'",
+    ofBatch: batchIs,
+  },
+  // Who was told of them; what is still under way is not.
+  told: {
+    table: 'outbox',
+    fields: {
+      alert: refers('alert_id'),
+      person: field('person', 'person_id', line(200)),
+      means: value('means', z.enum(MEANS)),
+      owed_at: time('created_at'),
+      sent_at: maybeTime('sent_at'),
+      failed_at: maybeTime('failed_at'),
+      dropped_at: maybeTime('dropped_at'),
+      held_by: maybe('held_by', z.enum(['quiet', 'mute', 'turn'])),
+      error: maybe('last_error', z.string().max(2000)),
+    },
+    order: 't.created_at, t.id',
+    where: 't.alert_id is not null and coalesce(t.sent_at, t.failed_at) is not null',
+    ofBatch: 't.alert_id in (select id from alerts where batch_id = $batchId)',
+  },
+  // Where each rule stands, so that what was said or cleared there is not said again here.
+  standings: {
+    table: 'alert_states',
+    fields: { batch: refers('batch_id'), rule: value('rule', z.enum(RULE_NAMES)), state: whole('state', standing), alert: mayRefer('alert_id') },
+    order: '(select b.created_at from batches b where b.id = t.batch_id), t.batch_id, t.rule',
+    ofCellar: 't.batch_id in (select id from batches where cellar_id = $cellarId)',
     ofBatch: batchIs,
   },
 };

@@ -39,8 +39,8 @@ const figure = z.number().nullable();
 /** In the order of READING_COLUMNS; `calibration` is the version that the gravity stands by. */
 export const archivedReading = z.tuple([timestamp, timestamp, gravity.nullable(), gravity.nullable(), figure, temperatureC.nullable(), figure, figure, figure, z.number().int().nullable(), z.int32().nullable()]);
 
-/** In a batch for this long, and as what: what its drink is judged by, or what only tells how warm its room is. */
-export const archivedStay = z.object({ batch: id, as: z.enum(['float', 'probe']), from: timestamp, to: timestamp });
+/** In a batch for this long (null: still), and as what: what its drink is judged by, or what only tells how warm its room is. */
+export const archivedStay = z.object({ batch: id, as: z.enum(['float', 'probe']), from: timestamp, to: orNull(timestamp) });
 
 export const archivedCalibration = z.object({
   version: z.int32().min(1),
@@ -61,10 +61,26 @@ export const archivedCalibration = z.object({
 
 export const archivedPoint = z.object({ at: timestamp, inclination: z.number(), gravity, temperature: z.number(), source: z.enum(POINT_SOURCES), sugar_g_per_l: orNull(z.number()), entry: orNull(id), by: orNull(line(200)), created_at: timestamp, removed_at: orNull(timestamp) });
 
-/** A sensor without its secret: it speaks no more where it comes back, what it said does. */
+const interval = z.int32().min(10).max(86_400);
+
+/** A message that was not taken, as it came: its body in base64. */
+export const archivedRefusal = z.object({ received_at: timestamp, road: z.enum(['mqtt', 'http']), reason: z.string().max(1000), body: z.string().max(4_000).regex(/^[A-Za-z0-9+/]*={0,2}$/, 'is no base64') });
+
+/** The interval that was sent down last, and what the sensor itself said of it. */
+export const archivedSettings = z.object({ version: z.int32().min(1), interval_s: orNull(interval), sent_at: orNull(timestamp), confirmed_version: orNull(z.int32().min(0)), confirmed_at: orNull(timestamp) });
+
+/** A sensor without its address and its secret: where it comes back it is silent until a keeper gives it a new one. */
 export const archivedSensor = z.object({
   name: line(60),
+  /** `file`: what a log file brought. */
+  kind: z.enum(['float', 'room', 'foam', 'file']).default('file'),
+  place: orNull(line(80)),
+  interval_s: interval.default(900),
+  settings: orNull(archivedSettings),
   created_at: timestamp,
+  disabled_at: orNull(timestamp),
+  removed_at: orNull(timestamp),
+  refused: z.array(archivedRefusal).max(100_000).default([]),
   stays: z.array(archivedStay).max(1_000),
   calibrations: z.array(archivedCalibration).max(1_000),
   points: z.array(archivedPoint).max(1_000),
@@ -111,6 +127,7 @@ export const archivedBatch = z.object({
   temperature_max_c: orNull(temperatureC),
   state: z.enum(BATCH_STATES),
   ended_at: orNull(timestamp),
+  by: orNull(line(200)),
   created_at: timestamp,
   entries: z.array(archivedEntry).max(20_000),
 }).refine((batch) => batch.vessel_l >= batch.volume_l, { error: 'is less than what is in it', path: ['vessel_l'] });
@@ -120,7 +137,7 @@ export const archiveSchema = z.object({
   format: z.literal('fallbright-archive', 'is no archive of this house'),
   version: z.literal(1, 'is of another version than this house knows'),
   exported_at: timestamp,
-  cellar: z.object({ name: z.string().max(200), time_zone: z.string().max(60) }),
+  cellar: z.object({ name: z.string().max(200), time_zone: z.string().max(60), /** What its costs are counted in. */ currency: z.string().max(3).nullish() }),
   batches: z.array(archivedBatch).max(2_000),
   ...archivedParts,
   sensors: z.array(archivedSensor).max(2_000).default([]),

@@ -1,7 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import { isDeepStrictEqual } from 'node:util';
 import type { Transaction } from 'sequelize';
-import { Alert } from '@/db/models';
+import { Alert, ImportRun } from '@/db/models';
 import { lockAlertStates, saveAlertState } from '@/db/queries/alert-states';
 import { ruleSettingsOf } from '@/db/queries/messages';
 import { dropHeld } from '@/db/queries/outbox';
@@ -44,6 +44,8 @@ export async function evaluateAlerts(judged: Judged, transaction: Transaction): 
   const settings = await ruleSettingsOf(batch.cellarId, batch.id, transaction);
 
   let seen = false;
+  let heard = false;
+  const hushedUntil = await hushedTo(batch, transaction);
   for (const usual of ALERT_RULES) {
     const { rule, enabled } = ruleAsSet(usual, settings);
     const row = rows.find((item) => item.rule === rule.name);
@@ -52,17 +54,21 @@ export async function evaluateAlerts(judged: Judged, transaction: Transaction): 
     const { state, events } = step(rule, before.state, look, at);
     const call = judged.assessment?.calls[rule.call] ?? null;
     let alert = before.alert;
-    for (const event of events) alert = await carryOut({ judged, rule, call, event, alert }, transaction);
+    for (const event of events) {
+      const hushed = event.type === 'opened' && at - rule.forMs <= hushedUntil;
+      alert = await carryOut({ judged, rule, call, event, alert, hushed }, transaction);
+      heard ||= !hushed;
+    }
     if (alert && call && look.type === 'true' && isUp(state) && alert.kind !== call.kind) {
       await alert.update({ kind: call.kind, evidence: call }, { transaction });
-      seen = true;
+      seen = heard = true;
     }
     const alertId = state.phase === 'inactive' || state.phase === 'pending' ? null : (alert?.id ?? null);
     const changed = alertId !== (row?.alertId ?? null) || !isDeepStrictEqual(state, before.state);
     if (changed) await saveAlertState(batch.id, { rule: rule.name, state, alertId }, transaction);
     seen ||= events.length > 0;
   }
-  if (seen) await notifyChange({ cellar: batch.cellarId, kind: 'alert', batch: batch.id }, transaction);
+  if (seen) await notifyChange({ cellar: batch.cellarId, kind: 'alert', batch: batch.id }, transaction, { toWebhooks: heard });
   return seen;
 }
 
@@ -72,10 +78,21 @@ interface Happened {
   call: Call | null;
   event: AlertEvent;
   alert: Alert | null;
+  /** It is shown, and nobody is told. */
+  hushed: boolean;
+}
+
+/** A first look at a batch that came in finds what was so all along. */
+const HUSH_MS = 3_600_000;
+
+/** What is seen until then wakes nobody: a batch brought it from another house, where it was known. */
+async function hushedTo({ importId }: BatchName, transaction: Transaction): Promise<number> {
+  const run = importId && (await ImportRun.findByPk(importId, { attributes: ['createdAt'], transaction }));
+  return run ? run.createdAt.getTime() + HUSH_MS : -Infinity;
 }
 
 /** Writes what one event means. Returns the alert that it concerns. */
-async function carryOut({ judged, rule, call, event, alert }: Happened, transaction: Transaction): Promise<Alert | null> {
+async function carryOut({ judged, rule, call, event, alert, hushed }: Happened, transaction: Transaction): Promise<Alert | null> {
   const { batch, cellar, at } = judged;
   const message = async (subject: Alert, name: AlertPayload['event'], key: string, people: Parameters<typeof tell>[1], shown: Call) => {
     const payload = alertPayload({ alertId: subject.id, rule, event: name, call: shown, since: subject.since.getTime(), at, batch, cellar });
@@ -90,7 +107,7 @@ async function carryOut({ judged, rule, call, event, alert }: Happened, transact
         { id: randomUUID(), cellarId, batchId, call: rule.call, kind: call.kind, level: rule.level, state: 'open', since: new Date(event.since), openedAt: new Date(at), evidence: call },
         { transaction },
       );
-      await message(opened, 'opened', 'opened', await toldFirst(cellarId, rule, transaction), call);
+      if (!hushed) await message(opened, 'opened', 'opened', await toldFirst(cellarId, rule, transaction), call);
       return opened;
     }
     case 'repeated':

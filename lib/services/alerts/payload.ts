@@ -3,7 +3,7 @@ import type { AlertRule } from '@/lib/core/alerts/rules';
 import type { Call, Instant } from '@/lib/core/types';
 import type { AlertPayload } from '@/lib/mail/payload';
 
-export type BatchName = Pick<Batch, 'id' | 'cellarId' | 'name' | 'tag' | 'place' | 'vesselKind'>;
+export type BatchName = Pick<Batch, 'id' | 'cellarId' | 'importId' | 'name' | 'tag' | 'place' | 'vesselKind'>;
 export type CellarName = Pick<Cellar, 'id' | 'name' | 'timeZone'>;
 
 interface Told {

@@ -10,7 +10,7 @@ import { partPieces } from './parts';
 import { photosPieces } from './photos';
 import { sensorsPieces } from './sensors';
 
-const setupOf = (batch: Batch) => ({
+const setupOf = (batch: Batch, names: ReadonlyMap<string, string>) => ({
   id: batch.id,
   name: batch.name,
   kind: batch.kind,
@@ -33,6 +33,7 @@ const setupOf = (batch: Batch) => ({
   temperature_max_c: batch.temperatureMaxC,
   state: batch.state,
   ended_at: isoOrNull(batch.endedAt),
+  by: batch.createdBy === null ? null : (names.get(batch.createdBy) ?? null),
   created_at: iso(batch.createdAt),
 });
 
@@ -60,11 +61,12 @@ async function entriesOf(batch: Batch) {
 }
 
 async function* pieces(cellar: Cellar, batches: readonly Batch[], batchId: string | null, now: number): AsyncGenerator<string> {
-  yield `{"format":"fallbright-archive","version":1,"exported_at":"${iso(now)}","cellar":${JSON.stringify({ name: cellar.name, time_zone: cellar.timeZone })},"batches":[`;
-  for (const [index, batch] of batches.entries()) yield `${index === 0 ? '' : ','}\n${JSON.stringify({ ...setupOf(batch), entries: await entriesOf(batch) })}`;
+  yield `{"format":"fallbright-archive","version":1,"exported_at":"${iso(now)}","cellar":${JSON.stringify({ name: cellar.name, time_zone: cellar.timeZone, currency: cellar.currency })},"batches":[`;
+  const names = await namesOf(batches.map((batch) => batch.createdBy));
+  for (const [index, batch] of batches.entries()) yield `${index === 0 ? '' : ','}\n${JSON.stringify({ ...setupOf(batch, names), entries: await entriesOf(batch) })}`;
   yield ']';
   yield* partPieces(cellar.id, batchId);
-  yield* sensorsPieces(cellar.id, batchId, now);
+  yield* sensorsPieces(cellar.id, batchId);
   yield* photosPieces(cellar.id, batchId);
   yield '}\n';
 }

@@ -1,5 +1,5 @@
-import { CalibrationPointRow, CalibrationRow } from '@/db/models';
-import { archiveSensors, readingsOfStay, staysOf, type ArchiveReading, type ArchiveSensor, type SensorStay } from '@/db/queries/archive';
+import { CalibrationPointRow, CalibrationRow, type Sensor } from '@/db/models';
+import { archiveSensors, readingsOfStay, refusalsOf, staysOf, type ArchiveReading, type SensorStay } from '@/db/queries/archive';
 import { READING_COLUMNS } from '@/lib/contracts/archive';
 import { namesOf } from '../entries/names';
 import { iso, isoOrNull } from '../iso';
@@ -46,30 +46,38 @@ async function pointsOf(sensorId: number) {
 }
 
 /** Spans that cover the stays, in order, each moment once. */
-export function spansOf(stays: readonly { from: Date; to: Date }[]): { from: Date; to: Date }[] {
-  const spans: { from: Date; to: Date }[] = [];
+export function spansOf(stays: readonly { from: Date; to: Date | null }[]): { from: Date; to: Date | null }[] {
+  const spans: { from: Date; to: Date | null }[] = [];
   for (const { from, to } of [...stays].sort((a, b) => a.from.getTime() - b.from.getTime())) {
     const last = spans.at(-1);
-    if (last && from <= last.to) last.to = to > last.to ? to : last.to;
+    if (last && (last.to === null || from <= last.to)) last.to = last.to === null || to === null ? null : to > last.to ? to : last.to;
     else spans.push({ from, to });
   }
   return spans;
 }
 
-async function* sensorPieces(sensor: ArchiveSensor, stays: readonly SensorStay[], wholeCellar: boolean, now: number): AsyncGenerator<string> {
-  // A stay that goes on ends where it leaves: nothing speaks into the copy.
-  const ended = stays.map((stay) => ({ ...stay, to: stay.to ?? new Date(Math.max(now, stay.from.getTime() + 1)) }));
+const settingsOf = (sensor: Sensor) =>
+  sensor.settingsVersion === 0 ? null : { version: sensor.settingsVersion, interval_s: sensor.wantedIntervalS, sent_at: isoOrNull(sensor.settingsAt), confirmed_version: sensor.confirmedVersion, confirmed_at: isoOrNull(sensor.confirmedAt) };
+
+async function* sensorPieces(sensor: Sensor, stays: readonly SensorStay[], wholeCellar: boolean): AsyncGenerator<string> {
   const head = JSON.stringify({
     name: sensor.name,
+    kind: sensor.kind,
+    place: sensor.place,
+    interval_s: sensor.intervalS,
+    settings: settingsOf(sensor),
     created_at: iso(sensor.createdAt),
-    stays: ended.map(({ batch, as, from, to }) => ({ batch, as, from: iso(from), to: iso(to) })),
+    disabled_at: isoOrNull(sensor.disabledAt),
+    removed_at: isoOrNull(sensor.removedAt),
+    refused: wholeCellar ? await refusalsOf(sensor.id) : [],
+    stays: stays.map(({ batch, as, from, to }) => ({ batch, as, from: iso(from), to: isoOrNull(to) })),
     calibrations: await calibrationsOf(sensor.id),
     points: await pointsOf(sensor.id),
     columns: READING_COLUMNS,
   });
   yield `${head.slice(0, -1)},"readings":[`;
   let first = true;
-  for (const span of wholeCellar ? [{ from: '-infinity' as const, to: null }] : spansOf(ended)) {
+  for (const span of wholeCellar ? [{ from: '-infinity' as const, to: null }] : spansOf(stays)) {
     for await (const page of readingsOfStay({ sensorId: sensor.id, ...span })) {
       yield (first ? '\n' : ',\n') + page.map((reading) => JSON.stringify(rowOf(reading))).join(',\n');
       first = false;
@@ -79,11 +87,11 @@ async function* sensorPieces(sensor: ArchiveSensor, stays: readonly SensorStay[]
 }
 
 /** The sensors of the archive as `,"sensors":[…]`, with every reading, or those that were taken in one batch. */
-export async function* sensorsPieces(cellarId: string, batchId: string | null, now: number): AsyncGenerator<string> {
+export async function* sensorsPieces(cellarId: string, batchId: string | null): AsyncGenerator<string> {
   yield ',\n"sensors":[';
   for (const [index, sensor] of (await archiveSensors(cellarId, batchId)).entries()) {
     if (index > 0) yield ',';
-    yield* sensorPieces(sensor, await staysOf(sensor.id, batchId), batchId === null, now);
+    yield* sensorPieces(sensor, await staysOf(sensor.id, batchId), batchId === null);
   }
   yield ']';
 }

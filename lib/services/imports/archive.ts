@@ -3,7 +3,7 @@ import { Batch, Entry, Membership, Person } from '@/db/models';
 import type { Archive, ArchivedBatch } from '@/lib/contracts/archive';
 import { PART_NAMES, type PartName } from '@/lib/contracts/archive-parts';
 import { bringPhotos, type StoredPhotos } from './photos';
-import { bringPart, refuseFile, type Bringing } from './parts';
+import { bringPart, checkStandings, refuseFile, type Bringing } from './parts';
 import { bringSensor } from './sensors';
 
 const date = (at: string | null) => (at === null ? null : new Date(at));
@@ -16,12 +16,12 @@ export async function peopleByName({ cellarId, transaction }: Pick<Bringing, 'ce
   return new Map(people.filter((person) => names.filter((name) => name === person.name).length === 1).map((person) => [person.name, person.id]));
 }
 
-async function bringBatch(batch: ArchivedBatch, by: { personId: string; importId: string }, { cellarId, ids, people, transaction }: Bringing): Promise<string> {
+async function bringBatch(batch: ArchivedBatch, importId: string, { cellarId, ids, people, transaction }: Bringing): Promise<string> {
   const row = await Batch.create(
     {
       id: ids.make(batch.id),
       cellarId,
-      importId: by.importId,
+      importId,
       name: batch.name,
       kind: batch.kind,
       drinkColour: batch.drink_colour,
@@ -43,7 +43,7 @@ async function bringBatch(batch: ArchivedBatch, by: { personId: string; importId
       temperatureMaxC: batch.temperature_max_c,
       state: batch.state,
       endedAt: date(batch.ended_at),
-      createdBy: by.personId,
+      createdBy: batch.by === null ? null : (people.get(batch.by) ?? null),
       createdAt: new Date(batch.created_at),
     },
     { transaction },
@@ -87,7 +87,7 @@ export interface Made {
 }
 
 /** Writes all that an archive holds into a cellar, as its own from now on. */
-export async function bringArchive(archive: Archive, stored: StoredPhotos, by: { personId: string; importId: string }, bringing: Bringing): Promise<{ counts: Record<string, number>; touched: string[]; made: Made }> {
+export async function bringArchive(archive: Archive, stored: StoredPhotos, importId: string, bringing: Bringing): Promise<{ counts: Record<string, number>; touched: string[]; made: Made }> {
   const made: Made = { tables: {}, sensors: [] };
   const written: Partial<Record<PartName, number>> = {};
   const bring = async (name: PartName) => {
@@ -96,8 +96,9 @@ export async function bringArchive(archive: Archive, stored: StoredPhotos, by: {
     if (name in STANDS_ALONE) made.tables[STANDS_ALONE[name as keyof typeof STANDS_ALONE]] = rows.map((row) => row.id as string);
   };
   for (const name of PART_NAMES) if (BEFORE_BATCHES.has(name)) await bring(name);
+  checkStandings(archive);
   const touched: string[] = [];
-  for (const batch of archive.batches) touched.push(await bringBatch(batch, by, bringing));
+  for (const batch of archive.batches) touched.push(await bringBatch(batch, importId, bringing));
   for (const name of PART_NAMES) if (!BEFORE_BATCHES.has(name)) await bring(name);
   let readings = 0;
   for (const sensor of archive.sensors) {

@@ -8,9 +8,10 @@ import { InvalidError } from '@/lib/errors';
 
 const AT_ONCE = 5_000;
 
-/** A sensor that speaks to nobody: it carries what a file brought, so that it can be taken out again whole. */
-export const silentSensor = ({ cellarId, name, createdAt }: { cellarId: string; name: string; createdAt?: Date }, transaction: Transaction): Promise<Sensor> =>
-  Sensor.create({ cellarId, identifier: makeSensorIdentifier(), secretHash: hashSensorSecret(makeSensorSecret()), name, kind: 'file', ...(createdAt && { createdAt }) }, { transaction });
+type Silent = Pick<Sensor, 'cellarId' | 'name'> & Partial<Pick<Sensor, 'kind' | 'place' | 'intervalS' | 'createdAt' | 'disabledAt' | 'removedAt' | 'settingsVersion' | 'wantedIntervalS' | 'settingsAt' | 'confirmedVersion' | 'confirmedAt'>>;
+
+/** A sensor whose secret nobody was told: it carries what a file brought, and stays silent until a keeper gives it a new one, or for ever where it is a `file`. */
+export const silentSensor = (sensor: Silent, transaction: Transaction): Promise<Sensor> => Sensor.create({ kind: 'file', ...sensor, identifier: makeSensorIdentifier(), secretHash: hashSensorSecret(makeSensorSecret()) }, { transaction });
 
 /** Returns how many were new. */
 export async function keepRows(sensorId: number, rows: readonly ArchiveReading[], transaction: Transaction): Promise<number> {

@@ -136,8 +136,9 @@ async function keepArchive(actor: Actor, id: string, form: Extract<ImportForm, {
     return await inTransaction(async (transaction) => {
       const run = await ImportRun.create({ id, cellarId, kind: 'archive', fileName: form.file_name, counts: {}, createdBy: actor.personId, createdAt: new Date(now) }, { transaction });
       const people = await peopleByName({ cellarId, transaction });
-      const { counts, touched, made } = await bringArchive(archive, stored, { personId: actor.personId, importId: id }, { cellarId, ids, people, transaction });
+      const { counts, touched, made } = await bringArchive(archive, stored, id, { cellarId, ids, people, transaction });
       await run.update({ counts, made }, { transaction });
+      if (made.sensors.length > 0) await notifyChange({ cellar: cellarId, kind: 'sensor', batch: null }, transaction);
       return finish(actor, run, touched, transaction);
     });
   } catch (error) {

@@ -1,9 +1,12 @@
+import { randomUUID } from 'node:crypto';
 import { Op, type Transaction } from 'sequelize';
 import { Lot, Place } from '@/db/models';
 import { insertPart, type PartRow } from '@/db/queries/archive-parts';
 import type { Archive } from '@/lib/contracts/archive';
 import { ARCHIVE_PARTS, type ArchivedRow, type PartName } from '@/lib/contracts/archive-parts';
 import type { MustSheetBody } from '@/lib/contracts/musts';
+import { isUp, type AlertState } from '@/lib/core/alerts/machine';
+import { ruleNamed, type RuleName } from '@/lib/core/alerts/rules';
 import { InvalidError } from '@/lib/errors';
 import { presentItem } from '../catalogue/present';
 import { sketchOf } from '../musts/sheet';
@@ -88,6 +91,26 @@ async function prepared(name: PartName, rows: readonly ArchivedRow[], bringing: 
   return rows;
 }
 
+/** What goes on has a rule that will end it, and a rule that has something up says what. */
+export function checkStandings({ alerts, standings }: Archive): void {
+  const goesOn = new Map(alerts.filter((alert) => alert.state !== 'resolved').map((alert) => [alert.id as string, alert]));
+  const upOf = (row: ArchivedRow) => isUp(row.state as AlertState);
+  for (const row of standings.filter(upOf)) {
+    const alert = goesOn.get(row.alert as string);
+    if (!alert || alert.batch !== row.batch || alert.call !== ruleNamed(row.rule as RuleName).call) throw refuseFile('standings refer to an alert that does not go on');
+    goesOn.delete(row.alert as string);
+  }
+  if (goesOn.size > 0) throw refuseFile('alerts go on without an end');
+}
+
+/** Columns of a part that the archive does not hold: reckoned from what it does, never believed. */
+const FURTHER: Partial<Record<PartName, (row: PartRow) => PartRow>> = {
+  // What the list of sheets shows.
+  must_versions: (row) => ({ sketch: sketchOf(row.body as MustSheetBody) }),
+  // It went from another house: nothing of it is sent again, nor who heard it told what becomes of it.
+  told: () => ({ dedupe_key: `brought:${randomUUID()}`, payload: {} }),
+};
+
 /** Gives everything that has an id a new one, in the archive's order. */
 export function makeIds(archive: Archive, ids: NewIds): void {
   const make = (rows: readonly { id?: unknown }[]) => {
@@ -102,12 +125,8 @@ export function makeIds(archive: Archive, ids: NewIds): void {
 /** Writes one part. @returns the rows as they were written */
 export async function bringPart(name: PartName, archive: Archive, bringing: Bringing): Promise<PartRow[]> {
   const rows = (await prepared(name, archive[name], bringing)).map((row) => tableRow(name, row, bringing)).filter((row) => row !== null);
-  if (name !== 'must_versions') {
-    await insertPart(ARCHIVE_PARTS[name], bringing.cellarId, rows, bringing.transaction);
-    return rows;
-  }
-  // What the list of sheets shows is reckoned from the sheet, never believed.
-  const sketched = rows.map((row) => ({ ...row, sketch: sketchOf(row.body as MustSheetBody) }));
-  await insertPart(ARCHIVE_PARTS[name], bringing.cellarId, sketched, bringing.transaction, ['sketch']);
+  const further = FURTHER[name];
+  const whole = further ? rows.map((row) => ({ ...row, ...further(row) })) : rows;
+  await insertPart(ARCHIVE_PARTS[name], bringing.cellarId, whole, bringing.transaction, further && rows[0] ? Object.keys(further(rows[0])) : []);
   return rows;
 }

@@ -15,7 +15,7 @@ const many = (count: number, one: string, more = `${one}s`) => `${count} ${count
 function namedIn(archive: Archive): Set<string> {
   const names = new Set<string>();
   const add = (name: unknown) => typeof name === 'string' && names.add(name);
-  for (const batch of archive.batches) for (const entry of batch.entries) add(entry.by);
+  for (const batch of archive.batches) for (const row of [batch, ...batch.entries]) add(row.by);
   for (const part of PART_NAMES) {
     const fields = Object.entries(ARCHIVE_PARTS[part].fields).flatMap(([name, { is }]) => (is === 'person' || is === 'people' ? name : []));
     for (const row of archive[part]) for (const field of fields) [row[field]].flat().forEach(add);
@@ -42,6 +42,8 @@ function notesOf(archive: Archive, here: ReadonlyMap<string, string>): string[] 
   return [
     ...(besides.length > 0 ? [`Besides: ${besides.join(', ')}.`] : []),
     ...(strangers.length > 0 ? [`Not in this cellar: ${strangers.slice(0, NAMES_SHOWN).join(', ')}${strangers.length > NAMES_SHOWN ? ` and ${strangers.length - NAMES_SHOWN} more` : ''}. What they wrote comes without their name.`] : []),
+    ...(sensors.some((sensor) => sensor.kind !== 'file' && sensor.removed_at === null) ? ['Its sensors come without their address and secret, and stay silent until a keeper makes a new secret on the page of each.'] : []),
+    ...(archive.batches.some((batch) => batch.state !== 'ended') ? ['What is already so of its working batches, or shows within the first hour, stands among the alerts and wakes nobody.'] : []),
     ...(photos.some((photo) => photo.jpeg === null) ? ['Some photos have no file and stay out.'] : []),
   ];
 }

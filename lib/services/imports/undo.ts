@@ -1,7 +1,7 @@
 import { Op } from 'sequelize';
 import { inTransaction } from '@/db/client';
 import { Assignment, Batch, ImportRun, Lot, Sensor } from '@/db/models';
-import { deleteImported } from '@/db/queries/archive';
+import { deleteImported, heardHere } from '@/db/queries/archive';
 import { deleteUnused } from '@/db/queries/imports';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
@@ -25,8 +25,10 @@ export async function undoImport(actor: Actor, id: string, clock: Clock = system
     if (ids.length > 0 && (await Lot.count({ where: { batchId: ids, createdAt: { [Op.gt]: run.createdAt } }, transaction })) > 0) throw new ConflictError('Some of these batches were bottled since. Take those bottles out of the book first.');
     const stays = ids.length > 0 ? await Assignment.findAll({ attributes: ['sensorId'], where: { batchId: ids }, transaction }) : [];
     const made = { tables: {}, sensors: [], ...(run.made as Partial<Made>) };
-    const sensors = [...stays.map((stay) => stay.sensorId), ...made.sensors, ...(run.sensorId === null ? [] : [run.sensorId])];
-    const floats = await Sensor.findAll({ attributes: ['id'], where: { kind: 'file', cellarId: actor.cellarId, id: { [Op.in]: sensors } }, transaction });
+    // What it brought is no longer the file's alone once it speaks here.
+    if (await heardHere(made.sensors, transaction)) throw new ConflictError('A sensor of this import has been heard here since. Remove it first; what it measured goes with it then.');
+    const files = [...stays.map((stay) => stay.sensorId), ...(run.sensorId === null ? [] : [run.sensorId])];
+    const floats = await Sensor.findAll({ attributes: ['id'], where: { cellarId: actor.cellarId, [Op.or]: [{ id: made.sensors }, { kind: 'file', id: files }] }, transaction });
     for (const float of floats) await deleteImported(float.id, transaction);
     await run.update({ undoneAt: new Date(clock.now()), undoneBy: actor.personId }, { transaction });
     await Batch.destroy({ where: { id: ids }, transaction });

@@ -1,4 +1,5 @@
 import { inTransaction } from '@/db/client';
+import { writeLift } from '@/db/queries/lots';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
@@ -21,6 +22,7 @@ export async function liftCaution(actor: Actor, lotId: string, input: LiftCautio
   return inTransaction(async (transaction) => {
     const lot = await loadLot(actor.cellarId, lotId, transaction);
     if (lot.caution === null) throw new ConflictError('There is no caution on this lot.');
+    await writeLift({ cellarId: actor.cellarId, lotId, caution: lot.caution, reason, personId: actor.personId, at: new Date(clock.now()) }, transaction);
     await auditBy(actor, 'lot.caution-lifted', lotId, { code: lot.code, caution: lot.caution, reason }, transaction);
     await lot.update({ caution: null }, { transaction });
     await notifyChange({ cellar: actor.cellarId, kind: 'lot', batch: null }, transaction);
