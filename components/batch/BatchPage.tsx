@@ -5,8 +5,8 @@ import { pictureOf } from '@/components/charts/from-wire';
 import { wholeSpan, type Span } from '@/components/charts/picture';
 import { isWhole, within } from '@/components/charts/zoom';
 import { clock, when } from '@/components/charts/zone';
+import { LinkButton } from '@/components/ui/Button';
 import { MuteBar } from '@/components/messages/BatchMute';
-import { Button, LinkButton } from '@/components/ui/Button';
 import { Haze } from '@/components/ui/Haze';
 import { usePageLayout } from '@/components/ui/layout';
 import { ErrorState } from '@/components/ui/Notice';
@@ -22,6 +22,7 @@ import { BatchHead, PhoneFacts, PhoneHead } from './BatchHead';
 import { Calls, type CallScene } from './Calls';
 import { callRows, type CallRow } from './calls';
 import { Decision, type DoneAct } from './Decision';
+import { Ended } from './Ended';
 import { EntryForm } from './EntryForm';
 import type { EntryDraft, EntryKind } from './entry-form';
 import { Evidence } from './Evidence';
@@ -140,7 +141,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
     timeZone,
     mayTake: may('alerts.acknowledge'),
     mayOverrule: working && may('entries.alter'),
-    leads: (row) => leadOf(row, batch.id, { bench: may('lots.bottle'), work: working && may('cellarwork.do') }),
+    leads: (row) => leadOf(row, batch.id, { bench: working && may('lots.bottle'), work: working && may('cellarwork.do') }),
     done: (row) => (working && row.name !== 'rack' && may('entries.create') ? doneAct(row, batch, open, may('entries.alter')) : null),
   };
   const trouble = [
@@ -154,9 +155,10 @@ function Loaded({ batch }: { batch: BatchBody }) {
 
   return (
     <>
-      <PhoneHead batch={batch} onSetup={actions.onSetup} meta={[`${day === null ? 'not pitched' : `day ${day}`}, ${litres(batch.volume_l)}`, ...(heard === null ? [] : [`heard ${when(heard, now, timeZone)}`])]} />
+      <PhoneHead batch={batch} onSetup={actions.onSetup} meta={phoneMeta(day === null ? 'not pitched' : `day ${day}`, litres(batch.volume_l), heard === null ? null : `heard ${when(heard, now, timeZone)}`)} />
       <BatchHead batch={shown} vessel={vessel} facts={facts} actions={actions} />
-      {first && <Decision row={first} vessel={vessel} when={whenOf(first, judged, now, timeZone)} done={working ? doneAct(first, batch, open, may('entries.alter')) : null} onRead={onRead} mayTake={may('alerts.acknowledge')} />}
+      {!working && <Ended batch={shown} entries={entries ?? []} timeZone={timeZone} onReopen={actions.onSetup} className="bg-lit strip:hidden" />}
+      {working && first && <Decision row={first} vessel={vessel} when={whenOf(first, judged, now, timeZone)} done={doneAct(first, batch, open, may('entries.alter'))} onRead={onRead} mayTake={may('alerts.acknowledge')} />}
       <PhoneFacts batch={shown} facts={facts} work={actions.work} />
       <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px] wide:grid-rows-[auto_1fr]">
         <div className="wide:col-start-1 wide:row-start-1">
@@ -166,8 +168,9 @@ function Loaded({ batch }: { batch: BatchBody }) {
           </Evidence>
         </div>
         <div className="wide:col-start-2 wide:row-span-2 wide:row-start-1 wide:border-l">
+          {!working && <Ended batch={shown} entries={entries ?? []} timeZone={timeZone} onReopen={actions.onSetup} className="max-strip:hidden" />}
           {judged ? (
-            <Calls rows={rows} judgedAt={clock(Date.parse(judged.at) / 1000, timeZone)} pending={judgement?.pending ?? false} scene={scene} />
+            <Calls over={!working} rows={rows} judgedAt={clock(Date.parse(judged.at) / 1000, timeZone)} pending={judgement?.pending ?? false} scene={scene} />
           ) : (
             <p className="type-body px-(--margin) py-3 text-ink2">Not judged yet. {batch.pitched_at === null ? 'Log the pitch; the calls follow.' : `It is ${STAGE_WORDS.unknown} how it goes until the first readings are in.`}</p>
           )}
@@ -177,11 +180,6 @@ function Loaded({ batch }: { batch: BatchBody }) {
           <Log batchId={batch.id} rows={entries ? log : null} now={now} timeZone={timeZone} onWrite={may('entries.create') ? () => open('observation') : null} onCorrect={(entry) => setOpened({ form: 'entry', kind: entry.kind as EntryKind, entry })} />
         </div>
       </div>
-      {!working && (
-        <p className="type-label px-(--margin) pb-6 text-ink2">
-          Ended{batch.ended_at && ` ${when(Date.parse(batch.ended_at) / 1000, now, timeZone)}`}. {actions.onSetup && <Button size="lane" look="quiet" onClick={actions.onSetup}>Open it again</Button>}
-        </p>
-      )}
       {opened?.form === 'entry' && (
         <Sheet title={opened.entry ? `Correct the log of ${batch.name}` : batch.name} onClose={close}>
           <EntryForm batchId={batch.id} kind={opened.kind} neck={opened.neck} entry={opened.entry} known={known} now={now} timeZone={timeZone} mayAlter={may('entries.alter')} onDone={close} />
@@ -195,6 +193,9 @@ function Loaded({ batch }: { batch: BatchBody }) {
     </>
   );
 }
+
+/** Two short lines, so that the name has the room. */
+const phoneMeta = (day: string, volume: string, heard: string | null) => (heard === null ? [day, volume] : [`${day}, ${volume}`, heard]);
 
 /** The page's clock moves by the minute; a reading that has just come in is now. */
 function nowOf(clockMs: number, lastAt: number | null): number {

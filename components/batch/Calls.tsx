@@ -144,6 +144,8 @@ function QuietCall({ row, scene }: { row: CallRow; scene: CallScene }) {
 }
 
 interface CallsProps {
+  /** The batch has ended: no call asks for anything any more. */
+  over: boolean;
   rows: readonly CallRow[];
   /** `14:31` */
   judgedAt: string;
@@ -153,14 +155,14 @@ interface CallsProps {
 }
 
 /** What the program makes of the batch, each with its evidence; what wants a person stands first and open. */
-export function Calls({ rows, judgedAt, pending, scene }: CallsProps) {
+export function Calls({ over, rows, judgedAt, pending, scene }: CallsProps) {
   return (
     <section aria-label="Calls">
       <h2 className="type-label border-b px-(--margin) py-2.5 text-ink2 max-wide:bg-desk wide:px-[18px]">
-        Calls, judged <span className="fig">{judgedAt}</span>
+        {over ? 'The last calls' : 'Calls'}, judged <span className="fig">{judgedAt}</span>
         {pending && ', being judged anew'}
       </h2>
-      {rows.map((row) => (isLoud(row) ? <LoudCall key={row.name} row={row} scene={scene} /> : <QuietCall key={row.name} row={row} scene={scene} />))}
+      {rows.map((row) => (isLoud(row) && !over ? <LoudCall key={row.name} row={row} scene={scene} /> : <QuietCall key={row.name} row={row} scene={scene} />))}
     </section>
   );
 }
