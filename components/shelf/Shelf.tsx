@@ -131,7 +131,7 @@ export function Shelf() {
         })}
         {views.length === 0 && (
           <ul>
-            <EmptyLane mayStart={may('batches.create')} />
+            <EmptyLane may={may} />
           </ul>
         )}
       </div>
