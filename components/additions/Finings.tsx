@@ -1,7 +1,8 @@
 'use client';
 
 import { useEffect, useState } from 'react';
-import { timeTyped, toLocal } from '@/components/batch/entry-form';
+import { timeTyped } from '@/components/batch/entry-form';
+import { WhenField } from '@/components/batch/WhenField';
 import { litres } from '@/components/batch/figures';
 import { when } from '@/components/charts/zone';
 import { countdown } from '@/components/rounds/rows';
@@ -85,7 +86,7 @@ export function Finings({ batchId, volumeL, now, timeZone, mayDo }: { batchId: s
 
   async function start() {
     const firstAt = timeTyped(at, timeZone);
-    if (firstAt === '') return setFailed('Choose a day and a time.');
+    if (firstAt === '') return setFailed('When it went in is not a whole day and time yet. Clear it for now.');
     setBusy(true);
     setFailed(null);
     try {
@@ -126,7 +127,7 @@ export function Finings({ batchId, volumeL, now, timeZone, mayDo }: { batchId: s
               ))}
             </Select>
             <Field label="Dose, as measured" autoComplete="off" maxLength={60} hint="As the packet says for this volume." value={dose} onChange={(event) => setDose(event.target.value)} />
-            <Field label={chosen?.intervalMin === null ? 'Went in' : 'First dose went in'} type="datetime-local" max={toLocal(now + 600, timeZone)} value={at} onChange={(event) => setAt(event.target.value)} hint="Empty: now." />
+            <WhenField label={chosen?.intervalMin === null ? 'Went in' : 'First dose went in'} value={at} onType={setAt} now={now} timeZone={timeZone} />
           </div>
           {chosen && (
             <p className="type-reason border-l-[3px] border-ochre pl-3">

@@ -12,6 +12,8 @@ import { ClientError } from '@/lib/client/fetcher';
 import { removeEntry, useRevisions } from '@/lib/client/entries';
 import { LOGGED_KINDS, type EntryBody } from '@/lib/contracts/batches';
 import { LogIcon, LOG_KIND_WORDS } from './icons';
+import { How } from '@/components/ui/How';
+import { howOfEntry } from './entry-words';
 import { filtered, LOG_FILTERS, logTime, type LogFilter, type LogRow } from './log';
 import { correctionsOf } from './revisions';
 
@@ -101,6 +103,7 @@ function Row({ row, batchId, now, timeZone, onCorrect }: RowProps) {
             </span>
           )}
         </p>
+        {entry && howOfEntry(entry) && <How how={howOfEntry(entry)!} of={`gravity ${row.figure ?? ''}, ${logTime(row.at, now, timeZone)}`} />}
         {entry?.revised && (
           <button type="button" aria-expanded={before} className={SMALL} onClick={() => setBefore(!before)}>
             {before ? 'corrected: put it away' : 'corrected'}

@@ -49,7 +49,10 @@ export function fromLocal(text: string, timeZone: string): string | null {
   return new Date(instantOf({ year, month, day, hour, minute }, timeZone) * 1000).toISOString();
 }
 
-/** When something was done, as typed; empty: now, so that a page left open is not earlier than what was logged from it since. */
+/** A time that is typed half way. */
+export const HALF_TYPED = 'half typed';
+
+/** When something was done, as typed; empty: now, so that a page left open is not earlier than what was logged from it since. What is no time is left for the schema to refuse. */
 export const timeTyped = (text: string, timeZone: string): string => (text === '' ? new Date().toISOString() : (fromLocal(text, timeZone) ?? ''));
 
 const EMPTY: Omit<EntryDraft, 'kind' | 'at'> = {

@@ -1,4 +1,7 @@
 import type { EntryBody } from '@/lib/contracts/batches';
+import { correctBrix, sgOfBrix } from '@/lib/core/gravity/refractometer';
+import type { How } from '@/lib/core/how/how';
+import { howOfReading, REFRACTOMETER_OFF_POINTS } from '@/lib/core/how/readings';
 import { degrees, grams, gravityText, litres } from './figures';
 import { CLARITY_WORDS, FOAM_WORDS, NECK_WORDS, SUBSTANCE_WORDS } from './words';
 
@@ -17,12 +20,20 @@ function additionWords(entry: EntryBody): string {
   return what ? `Added ${what}.` : 'Something added.';
 }
 
+/** Read before there was any alcohol in it: °Bx stands for itself. */
+const must = (entry: EntryBody): boolean => entry.detail?.brix != null && entry.gravity !== null && Math.abs(entry.gravity - sgOfBrix(brixAt20(entry))) < 0.0002;
+const brixAt20 = ({ detail, temperature_c }: EntryBody): number => (temperature_c === null ? null : correctBrix(detail?.brix ?? 0, temperature_c)) ?? detail?.brix ?? 0;
+
+/** Where the gravity of a reading comes from; null where it stands as it was read. */
+export const howOfEntry = (entry: EntryBody): How | null =>
+  entry.kind !== 'reading' || entry.gravity === null ? null : howOfReading({ gravity: entry.gravity, read: entry.gravity_read, sampleC: entry.temperature_c, calibratedC: entry.calibrated_at_c, brix: entry.detail?.instrument === 'refractometer' ? (entry.detail.brix ?? null) : null, must: must(entry) });
+
 function readingWords(entry: EntryBody): string {
   const { detail } = entry;
   const sample = entry.temperature_c === null ? '' : `, sample at ${degrees(entry.temperature_c)}`;
   const ph = detail?.ph == null ? '' : ` pH ${detail.ph.toFixed(2)}.`;
   const og = detail?.as_original_gravity ? ' Taken for the original gravity.' : '';
-  if (detail?.instrument === 'refractometer') return `Refractometer${detail.brix == null ? '' : ` ${detail.brix.toFixed(1)} °Bx`}${sample}, alcohol reckoned in.`;
+  if (detail?.instrument === 'refractometer') return `Refractometer${detail.brix == null ? '' : ` ${detail.brix.toFixed(1)} °Bx`}${sample}${must(entry) ? '.' : `, alcohol reckoned in from memory, ± ${(REFRACTOMETER_OFF_POINTS / 1000).toFixed(3)}.`}${ph}${og}`;
   const corrected = entry.gravity !== null && entry.gravity_read !== null && gravityText(entry.gravity) !== gravityText(entry.gravity_read);
   return `Hydrometer${sample}${corrected ? `, corrected from ${gravityText(entry.gravity_read!)}` : ''}.${ph}${og}`;
 }

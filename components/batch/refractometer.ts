@@ -1,4 +1,5 @@
 import { correctBrix, gravityByRefractometer, sgOfBrix } from '@/lib/core/gravity/refractometer';
+import { REFRACTOMETER_OFF_POINTS } from '@/lib/core/how/readings';
 import { gravityText, typedNumber } from './figures';
 
 /** What has to be known of the must for a refractometer to tell anything. */
@@ -19,5 +20,5 @@ export function refractometerWords(draft: { brix: string; temperature: string },
   if (originalGravity === null) return 'Alcohol changes what it shows: tell the original gravity first, or use a hydrometer.';
   const gravity = gravityByRefractometer(originalGravity, brix);
   if (gravity === null) return `That is more than the must had at the start, ${gravityText(originalGravity)}.`;
-  return `${gravityText(gravity)} ± 0.004 with the alcohol reckoned in, from ${gravityText(originalGravity)}; read as a must it would be ${gravityText(sgOfBrix(brix))}. Not to bottle by: what alcohol adds to the reading is recalled, not checked against a source.`;
+  return `${gravityText(gravity)} ± ${(REFRACTOMETER_OFF_POINTS / 1000).toFixed(3)} with the alcohol reckoned in, from ${gravityText(originalGravity)}; read as a must it would be ${gravityText(sgOfBrix(brix))}. Not to bottle by: what alcohol adds to the reading is recalled, not checked against a source.`;
 }

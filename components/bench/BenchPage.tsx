@@ -177,10 +177,9 @@ function BottlePictures({ bottle, verdict, request, timeZone, now }: { bottle: B
       residualVolumes: residual.value.hi,
       addedVolumes: Math.max(0, bottle.volumes.value.hi - residual.value.hi),
       remainingPoints: remaining.value.hi,
-      // What the sugar for fizz adds makes the drink hold less gas, as in the table.
-      drink: { ...request.drink, abvPercent: Math.min(30, request.drink.abvPercent + bottle.abvAddedPercent) },
+      drink: bottle.asBottled,
     }),
-    [bottle, residual, remaining, request],
+    [bottle, residual, remaining],
   );
   const points = useMemo(() => pressureByDay(inBottle, now, request.warmestStoreC), [inBottle, now, request]);
   return (

@@ -5,6 +5,7 @@ import Link from 'next/link';
 import type { CSSProperties } from 'react';
 import { KIND_WORDS } from '@/components/batch/words';
 import { drinkHex } from '@/components/charts/palette';
+import { AskHow } from '@/components/how/AskHow';
 import { buttonClass, LinkButton } from '@/components/ui/Button';
 import { Field, Select } from '@/components/ui/Field';
 import { FilterTabs } from '@/components/ui/FilterTabs';
@@ -19,7 +20,7 @@ import { useMe } from '@/lib/client/me';
 import type { LOT_SORTS, LotSummary } from '@/lib/contracts/lots';
 import { DRINK_KINDS, type DrinkKind } from '@/lib/core/types';
 import { Places } from './Places';
-import { costWords, dayWords, leftWords, SPARKLE_WORDS, strengthWords } from './words';
+import { answersOfLot, costWords, dayWords, leftWords, SPARKLE_WORDS, strengthWords } from './words';
 
 type StateTab = NonNullable<LotSearch['state']>;
 type Sort = (typeof LOT_SORTS)[number];
@@ -45,8 +46,8 @@ function LotRow({ lot, timeZone, now }: { lot: LotSummary; timeZone: string; now
   const score = lot.tastings.score;
   const { money } = useMoney();
   return (
-    <li className="border-b">
-      <Link href={`/book/${lot.id}`} className="drink grid gap-x-5 gap-y-1 py-2.5 pl-(--margin) pr-(--margin) no-underline -outline-offset-2 hover:bg-lit strip:grid-cols-[10px_minmax(0,1.4fr)_minmax(0,1fr)_minmax(0,1fr)] strip:items-center" style={{ '--drink': drinkHex(lot.batch.drink_colour) } as CSSProperties}>
+    <li className="flex items-center border-b hover:bg-lit">
+      <Link href={`/book/${lot.id}`} className="drink grid min-w-0 flex-1 gap-x-5 gap-y-1 py-2.5 pl-(--margin) pr-(--margin) no-underline -outline-offset-2 strip:grid-cols-[10px_minmax(0,1.4fr)_minmax(0,1fr)_minmax(0,1fr)] strip:items-center" style={{ '--drink': drinkHex(lot.batch.drink_colour) } as CSSProperties}>
         <span aria-hidden className="hidden h-full min-h-9 border border-ink bg-(--drink-fill) strip:block" />
         <span className="min-w-0">
           <span className="type-name block break-words">{lot.name}</span>
@@ -69,6 +70,7 @@ function LotRow({ lot, timeZone, now }: { lot: LotSummary; timeZone: string; now
           </span>
         </span>
       </Link>
+      <AskHow of={`figures of ${lot.name}, ${lot.code}`} answers={() => answersOfLot(lot, money)} className="shrink-0 pr-(--margin)" />
     </li>
   );
 }

@@ -20,12 +20,13 @@ import { ClientError } from '@/lib/client/fetcher';
 import { undoOpening, useLot } from '@/lib/client/lots';
 import { useMe } from '@/lib/client/me';
 import type { LotBody } from '@/lib/contracts/lots';
+import { HOW_COUNTED } from '@/lib/core/how/lots';
 import { BenchRecord } from './BenchRecord';
 import { Caution, Lifted } from './Caution';
 import { EditLot } from './EditLot';
 import { LotBottles } from './LotBottles';
 import { Serve } from './Serve';
-import { costWords, dayWords, HOW_COUNTED, leftWords, OPENING_WORDS, SPARKLE_WORDS, strengthWords } from './words';
+import { costWords, dayWords, leftWords, OPENING_WORDS, SPARKLE_WORDS, strengthWords } from './words';
 
 /** One lot of the cellar book. */
 export function LotPage({ id }: { id: string }) {

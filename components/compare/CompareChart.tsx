@@ -8,7 +8,8 @@ import { ZoomTools } from '@/components/charts/ZoomTools';
 import { gravityNumber, temperatureNumber } from '@/components/ui/units';
 import { useWidth } from '@/components/ui/width';
 import { valueAt, written, type Curve, type Measure, type Point } from './curves';
-import { between, DAY_S, dayTicks, heightOf, ticks, wholeOf } from './scales';
+import { between, DAY_S, dayTicks, heightOf, ticks } from './scales';
+import { smoothPath } from './smooth';
 
 const HEIGHT = 420;
 const [TOP, FOOT, LEFT] = [30, 42, 54];
@@ -41,12 +42,11 @@ function spread(ends: ReadonlyArray<{ id: string; y: number }>): Map<string, num
 const scaleWords = (value: number, measure: Measure): string => (measure === 'gravity' ? gravityNumber(value) : measure === 'temperature' ? temperatureNumber(value) : String(Number(value.toFixed(1))).replace('-', '−'));
 
 /** Curves over each other, day 0 the pitch of each, to be zoomed and moved along. The table below says the same. */
-export function CompareChart({ curves, measure, span: asked, onSpan }: { curves: readonly Curve[]; measure: Measure; /** s since the pitch; null: all of it. */ span: Span | null; onSpan: (span: Span) => void }) {
+export function CompareChart({ curves, measure, whole, span: asked, onSpan }: { curves: readonly Curve[]; measure: Measure; /** All there is to see, s since the pitch. */ whole: Span; /** s since the pitch; null: all of it. */ span: Span | null; onSpan: (span: Span) => void }) {
   const frame = useRef<HTMLDivElement>(null);
   const width = Math.max(300, useWidth(frame, 1100));
   const [cursor, setCursor] = useState<number | null>(null);
   const drawn = curves.filter((curve) => curve.points.length > 1);
-  const whole = wholeOf(drawn);
   const span = within(asked ?? whole, whole);
   const wide = width > 700;
   const right = wide ? NAMES : 8;
@@ -113,7 +113,7 @@ function Drawing({ curves, measure, span, width, right, wide, at, onCursor, onSp
   const height = heightOf([...shown.flatMap(({ points }) => points), ...curves.flatMap((curve) => curve.rings.filter(inside))]) ?? { bottom: 0, top: 1 };
   const x = (day: number) => LEFT + ((right - LEFT) * (day - from)) / (to - from);
   const y = (value: number) => TOP + ((HEIGHT - TOP - FOOT) * (height.top - value)) / (height.top - height.bottom);
-  const line = (points: readonly Point[]) => points.map((point, index) => `${index === 0 ? 'M' : 'L'}${x(point.day).toFixed(1)} ${y(point.value).toFixed(1)}`).join('');
+  const line = (points: readonly Point[]) => smoothPath(points.map((point) => ({ x: x(point.day), y: y(point.value) })));
   const ends = shown.flatMap(({ curve, points }) => (points.length > 0 ? [{ id: curve.id, y: y(points.at(-1)!.value) }] : []));
   const names = spread(ends);
 

@@ -5,6 +5,7 @@ import { useRouter, useSearchParams } from 'next/navigation';
 import { useMemo, useState } from 'react';
 import { drinkHex } from '@/components/charts/palette';
 import type { Span } from '@/components/charts/picture';
+import { useSettled } from '@/components/ui/use-settled';
 import { dayName } from '@/components/charts/zone';
 import { Box } from '@/components/ui/Box';
 import { Choice } from '@/components/ui/Choice';
@@ -17,12 +18,16 @@ import { useCompare } from '@/lib/client/lots';
 import { useMe } from '@/lib/client/me';
 import type { BatchBody } from '@/lib/contracts/batches';
 import { CompareChart } from './CompareChart';
-import { curveOf, tableDays, valueAt, written, type Curve, type Measure } from './curves';
+import { closer, curveOf, tableDays, valueAt, written, type Curve, type Measure } from './curves';
 import { Results } from './Results';
+import { wholeOf } from './scales';
 
 const MOST = 8;
 /** Enough of a curve to look at it closely. */
 const POINTS = 800;
+const HOUR_S = 3600;
+/** Seen closer than this share of the whole, the readings of the span are asked for. */
+const CLOSE = 0.5;
 const MEASURES: readonly { value: Measure; name: string }[] = [
   { value: 'gravity', name: 'gravity' },
   { value: 'share', name: 'share of the fall' },
@@ -92,7 +97,13 @@ function Over({ ids }: { ids: readonly string[] }) {
   const { compared, error, retry } = useCompare(ids, POINTS);
   const [span, setSpan] = useState<Span | null>(null);
   const [measure, setMeasure] = useState<Measure>('gravity');
-  const curves = useMemo(() => (compared ?? []).map((item) => curveOf(item, measure, drinkHex(item.batch.drink_colour))), [compared, measure]);
+  const settled = useSettled(span);
+  const whole = useMemo(() => wholeOf((compared ?? []).map((item) => curveOf(item, measure, ''))), [compared, measure]);
+  // What is looked at closely has all its points.
+  const close = settled && settled.to - settled.from < CLOSE * (whole.to - whole.from) ? { from: Math.max(0, Math.floor(settled.from / HOUR_S) - 1), to: Math.ceil(settled.to / HOUR_S) + 1 } : null;
+  const { compared: near } = useCompare(close ? ids : [], POINTS, close ?? undefined);
+  const items = useMemo(() => (compared ?? []).map((item) => closer(item, near?.find(({ batch }) => batch.id === item.batch.id))), [compared, near]);
+  const curves = useMemo(() => items.map((item) => curveOf(item, measure, drinkHex(item.batch.drink_colour))), [items, measure]);
   if (error && !compared) {
     return (
       <ErrorState title="The curves did not load" onRetry={retry}>
@@ -107,7 +118,7 @@ function Over({ ids }: { ids: readonly string[] }) {
       <div className="px-(--margin) py-3">
         <Choice label="Drawn" bare value={measure} onChoose={setMeasure} options={MEASURES} className="max-w-[520px]" />
       </div>
-      <CompareChart curves={curves} measure={measure} span={span} onSpan={setSpan} />
+      <CompareChart curves={curves} measure={measure} whole={whole} span={span} onSpan={setSpan} />
       {unpitched.map((item) => (
         <p key={item.batch.id} className="type-reason px-(--margin) pb-2 text-ink2">
           <Link href={`/batches/${item.batch.id}`}>{item.batch.name}</Link> has not been pitched: there is nothing to align.

@@ -3,14 +3,18 @@ import { percent } from '@/components/batch/figures';
 import { KIND_WORDS } from '@/components/batch/words';
 import { GroupBar } from '@/components/ui/Page';
 import { How } from '@/components/ui/How';
-import { HOW_TASTED } from '@/components/tasting/words';
 import { gravityText } from '@/components/ui/units';
 import { how, type How as HowAnswer } from '@/lib/core/how/how';
+import { HOW_TASTED } from '@/lib/core/how/lots';
 import { SOURCES } from '@/lib/core/how/sources';
 import type { Compared } from './curves';
 
 const ATTENUATION = how('(original gravity − gravity) ÷ (original gravity − 1), with all the sugar that went in counted as there from the start; alcohol is lighter than water, so a dry drink passes 100 %', SOURCES.practice);
 const TO_THE_END = how('from the pitch to the hour from which its readings are judged to stand still', SOURCES.ownRule);
+
+const ORIGINAL = how('as told in the set-up, or the reading at the pitch; what was added since is not in it', SOURCES.told);
+const LAST = how('last reading by hydrometer, else the float’s level; corrected to 20 °C where the sample’s temperature was logged', SOURCES.told);
+const LOTS = how('lots bottled from it that stand in the cellar book', SOURCES.told);
 
 const days = (hours: number): string => `${(hours / 24).toFixed(1)} days`;
 
@@ -19,11 +23,11 @@ export function Results({ items }: { items: readonly Compared[] }) {
   const rows: Array<{ name: string; says: (item: Compared) => string; how?: HowAnswer }> = [
     { name: 'kind', says: ({ batch }) => KIND_WORDS[batch.kind] },
     { name: 'yeast', says: ({ batch }) => batch.yeast ?? 'not told' },
-    { name: 'original gravity', says: ({ batch }) => (batch.original_gravity === null ? 'not told' : gravityText(batch.original_gravity)) },
-    { name: 'gravity', says: ({ result }) => (result.gravity === null ? 'not read' : gravityText(result.gravity)) },
+    { name: 'original gravity', says: ({ batch }) => (batch.original_gravity === null ? 'not told' : gravityText(batch.original_gravity)), how: ORIGINAL },
+    { name: 'gravity', says: ({ result }) => (result.gravity === null ? 'not read' : gravityText(result.gravity)), how: LAST },
     { name: 'attenuation', says: ({ result }) => (result.attenuation_percent === null ? 'not known' : `${result.attenuation_percent.toFixed(0)} %`), how: ATTENUATION },
     { name: 'from pitch to the end', says: ({ batch, result }) => (result.hours_to_terminal === null ? (batch.state === 'ended' ? 'not known' : 'not yet') : days(result.hours_to_terminal)), how: TO_THE_END },
-    { name: 'lots', says: ({ result }) => String(result.lots) },
+    { name: 'lots', says: ({ result }) => String(result.lots), how: LOTS },
     { name: 'tasted', says: ({ result }) => (result.score === null ? 'by nobody' : `${result.score.toFixed(1)} of 10`), how: HOW_TASTED },
   ];
   return (

@@ -86,6 +86,15 @@ export function curveOf(item: Compared, measure: Measure, colour: string): Curve
   return { id: item.batch.id, name: item.batch.name, colour, points, rings, posts };
 }
 
+/** The same batch with the readings of a part of it in the place of the few that the whole had there. */
+export function closer(item: Compared, near: Compared | undefined): Compared {
+  const [from, to] = [near?.hours[0], near?.hours.at(-1)];
+  if (!near || from === undefined || to === undefined) return item;
+  const [before, after] = [item.hours.findIndex((hour) => hour >= from), item.hours.findIndex((hour) => hour > to)];
+  const spliced = <T>(of: (one: Compared) => T[]): T[] => [...of(item).slice(0, before === -1 ? item.hours.length : before), ...of(near), ...(after === -1 ? [] : of(item).slice(after))];
+  return { ...item, hours: spliced((one) => one.hours), gravity: spliced((one) => one.gravity), temperature: spliced((one) => one.temperature) };
+}
+
 /** Days at which the table tells every batch, as far as the longest goes. */
 export function tableDays(curves: readonly Curve[]): number[] {
   const last = Math.max(0, ...curves.map((curve) => curve.points.at(-1)?.day ?? 0));

@@ -2,7 +2,8 @@
 
 import Link from 'next/link';
 import { useMemo, useState, type FormEvent } from 'react';
-import { timeTyped, toLocal } from '@/components/batch/entry-form';
+import { timeTyped } from '@/components/batch/entry-form';
+import { WhenField } from '@/components/batch/WhenField';
 import { litres, percent, typedNumber } from '@/components/batch/figures';
 import { Button } from '@/components/ui/Button';
 import { Choice } from '@/components/ui/Choice';
@@ -118,7 +119,7 @@ export function BlendForm({ batch, now, timeZone }: { batch: BatchBody; now: num
         </div>
       )}
       <p className="type-reason text-ink2">Sugar of one and yeast of the other can begin again. Leave room, keep an airlock on it, and read it by hand before it goes near a bottle.</p>
-      <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={at} onChange={(event) => setAt(event.target.value)} hint="Empty: now." error={errors.at} />
+      <WhenField value={at} onType={setAt} now={now} timeZone={timeZone} error={errors.at} />
       <Field label="Note" autoComplete="off" maxLength={2000} value={text} onChange={(event) => setText(event.target.value)} />
       {failed && <FormError>{failed}</FormError>}
       <Button look="first" type="submit" className="self-end" disabled={sending}>

@@ -1,7 +1,8 @@
 'use client';
 
 import { useState, type FormEvent } from 'react';
-import { timeTyped, toLocal } from '@/components/batch/entry-form';
+import { timeTyped } from '@/components/batch/entry-form';
+import { WhenField } from '@/components/batch/WhenField';
 import { litres, points, typedGravity, typedNumber } from '@/components/batch/figures';
 import { NECK_WORDS } from '@/components/batch/words';
 import { Button } from '@/components/ui/Button';
@@ -168,7 +169,7 @@ export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rac
             <p className="type-reason text-ink2">Keep air out: a full vessel and a hose that reaches the bottom. Lift a full glass vessel with both hands, one under it, never by its neck; nothing hot into cold glass.</p>
           </>
         )}
-        <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={draft.at} onChange={set('at')} hint="Empty: now." error={errors.at} />
+        <WhenField value={draft.at} onType={(at) => setDraft((before) => ({ ...before, at }))} now={now} timeZone={timeZone} error={errors.at} />
         <Field label="Note" autoComplete="off" maxLength={2000} value={draft.text} onChange={set('text')} />
         {failed && <FormError>{failed}</FormError>}
         <div className="wide:hidden">{comes}</div>

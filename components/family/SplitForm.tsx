@@ -2,7 +2,8 @@
 
 import Link from 'next/link';
 import { useState, type FormEvent } from 'react';
-import { timeTyped, toLocal } from '@/components/batch/entry-form';
+import { timeTyped } from '@/components/batch/entry-form';
+import { WhenField } from '@/components/batch/WhenField';
 import { litres, typedNumber } from '@/components/batch/figures';
 import { Button } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
@@ -89,7 +90,7 @@ export function SplitForm({ batch, now, timeZone }: { batch: BatchBody; now: num
         </p>
       )}
       <p className="type-reason text-ink2">Each part keeps the pitch, the yeast and the original gravity it comes with, and is read by hand until it has a sensor of its own. Each must be read anew before its bench says anything.</p>
-      <Field label="When" type="datetime-local" max={toLocal(now + 600, timeZone)} value={at} onChange={(event) => setAt(event.target.value)} hint="Empty: now." error={errors.at} />
+      <WhenField value={at} onType={setAt} now={now} timeZone={timeZone} error={errors.at} />
       <Field label="Note" autoComplete="off" maxLength={2000} value={text} onChange={(event) => setText(event.target.value)} />
       {failed && <FormError>{failed}</FormError>}
       <Button look="first" type="submit" className="self-end" disabled={sending}>

@@ -7,7 +7,7 @@ import { Choice } from '@/components/ui/Choice';
 import { Field } from '@/components/ui/Field';
 import { How } from '@/components/ui/How';
 import { Sentence } from '@/components/ui/Sentence';
-import { hydrometerMarks } from '@/components/ui/units';
+import { gravityName, gravityText, hydrometerMarks } from '@/components/ui/units';
 import { UnitField } from '@/components/units/UnitField';
 import { State } from '@/components/ui/StateMark';
 import { camelKeys } from '@/lib/contracts/case';
@@ -30,6 +30,9 @@ function measurementOf(instrument: Measurement['with'], reading: string, sample:
   const brix = typedNumber(reading);
   return isNumber(brix) && brix >= 0 && brix <= 45 && !Number.isNaN(sampleC) ? { with: 'refractometer', brix, sampleC } : null;
 }
+
+/** A figure more than the log writes, as a hydrometer for the original gravity is read; whoever reads °Bx or °P has theirs. */
+const finely = (sg: number): string => (gravityName() === '' ? sg.toFixed(4) : gravityText(sg));
 
 const GAP_WORDS = { as_expected: 'As the sheet promised', lower: 'Lower than promised', higher: 'Higher than promised' } as const;
 
@@ -99,7 +102,7 @@ export function Measured({ must, keptAs, mayStart }: { must: MustBody; keptAs: s
           {measured?.ok && (
             <>
               <p className="type-verdict-now">
-                <Sentence strong>{`At 20 °C it is ${measured.gravity.value.value.toFixed(4)}`}</Sentence> <span className="type-label text-ink2">{ends(measured.gravity.value, 4)}</span>
+                <Sentence strong>{`At 20 °C it is ${finely(measured.gravity.value.value)}`}</Sentence> <span className="type-label text-ink2">{`${finely(measured.gravity.value.lo)} to ${finely(measured.gravity.value.hi)}`}</span>
               </p>
               <How how={measured.gravity.how} of="the corrected gravity" />
               {expected && <Gap expected={expected} measured={measured.gravity.value} />}

@@ -3,6 +3,7 @@
 import Link from 'next/link';
 import { useState } from 'react';
 import { dayName } from '@/components/charts/zone';
+import { AskHow } from '@/components/how/AskHow';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
 import { FilterTabs } from '@/components/ui/FilterTabs';
@@ -13,12 +14,13 @@ import { gravityEnds, gravityText, volumeText } from '@/components/ui/units';
 import { useMe } from '@/lib/client/me';
 import { useMusts } from '@/lib/client/musts';
 import type { MustList as Musts } from '@/lib/contracts/musts';
+import { answersOfMust } from './answers';
 import { DRINK_WORDS, ends } from './words';
 
 function Row({ must, timeZone }: { must: Musts['items'][number]; timeZone: string }) {
   return (
-    <li className="border-b">
-      <Link href={`/musts/${must.id}`} className="grid min-h-14 grid-cols-[minmax(0,1fr)_auto] items-baseline gap-x-6 gap-y-0.5 px-(--margin) py-2.5 no-underline hover:bg-desk strip:grid-cols-[minmax(0,1fr)_9rem_9rem_7rem_9rem]">
+    <li className="flex items-center border-b hover:bg-desk">
+      <Link href={`/musts/${must.id}`} className="grid min-h-14 min-w-0 flex-1 grid-cols-[minmax(0,1fr)_auto] items-baseline gap-x-6 gap-y-0.5 px-(--margin) py-2.5 no-underline strip:grid-cols-[minmax(0,1fr)_9rem_9rem_7rem_9rem]">
         <div className="min-w-0">
           <p className="type-name break-words">{must.name}</p>
           <p className="type-label text-ink2">
@@ -35,6 +37,7 @@ function Row({ must, timeZone }: { must: Musts['items'][number]; timeZone: strin
           <span className="block">{dayName(Date.parse(must.changed_at) / 1000, timeZone)}</span>
         </p>
       </Link>
+      <AskHow of={`figures of ${must.name}`} answers={() => answersOfMust(must)} className="shrink-0 pr-(--margin)" />
     </li>
   );
 }

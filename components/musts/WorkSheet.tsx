@@ -2,10 +2,13 @@ import { dayName } from '@/components/charts/zone';
 import { camelKeys } from '@/lib/contracts/case';
 import type { MustBody } from '@/lib/contracts/musts';
 import { pitchChecklist } from '@/lib/core/must/pitch';
+import { Sentence } from '@/components/ui/Sentence';
+import { gravityEnds, gravityName, gravityText, temperatureName, temperatureNumber, temperatureText, volumeText } from '@/components/ui/units';
 import { amountText } from './amount';
 import { DRINK_WORDS, ends, SWEET_WORDS, unitWord } from './words';
 
-const PLACES = ['measured gravity', 'sample °C', 'must °C', 'pitched at', 'vessel and tag', 'by'];
+/** Places to write in, in the units that the person reads. */
+const places = () => [`measured gravity${gravityName()}`, `sample ${temperatureName()}`, `must ${temperatureName()}`, 'pitched at', 'vessel and tag', 'by'];
 
 /** Above this many lines they stand in two columns, so that all of it stays on one page. */
 const ONE_COLUMN = 14;
@@ -58,11 +61,11 @@ export function WorkSheet({ must, timeZone }: { must: MustBody; timeZone: string
   const notes = [...(outcome?.notes ?? [])].sort((a, b) => weight(a.kind) - weight(b.kind)).slice(0, dense ? NOTES.many : NOTES.few).map((note) => note.sentence);
   const facts = outcome
     ? [
-        ['original gravity', `${outcome.original_gravity.value.value.toFixed(3)} (${ends(outcome.original_gravity.value, 3)})`],
-        ['volume', `${outcome.volume_l.value.value.toFixed(1)} L`],
+        ['original gravity', `${gravityText(outcome.original_gravity.value.value)} (${gravityEnds(outcome.original_gravity.value)})`],
+        ['volume', volumeText(outcome.volume_l.value.value, 1)],
         ['strength, Balling', `${outcome.strength.balling.value.value.toFixed(1)} % (${ends(outcome.strength.balling.value, 1)})`],
-        ['ends', `${outcome.final_gravity.value.value.toFixed(3)}, ${SWEET_WORDS[outcome.sweetness.from]}${outcome.sweetness.to === outcome.sweetness.from ? '' : ` to ${SWEET_WORDS[outcome.sweetness.to]}`}`],
-        ['yeast', sheet.yeast ? `${sheet.yeast.name}, ${sheet.yeast.temperature_c.min} to ${sheet.yeast.temperature_c.max} °C` : 'not chosen'],
+        ['ends', `${gravityText(outcome.final_gravity.value.value)}, ${SWEET_WORDS[outcome.sweetness.from]}${outcome.sweetness.to === outcome.sweetness.from ? '' : ` to ${SWEET_WORDS[outcome.sweetness.to]}`}`],
+        ['yeast', sheet.yeast ? `${sheet.yeast.name}, ${temperatureNumber(sheet.yeast.temperature_c.min, 0)} to ${temperatureText(sheet.yeast.temperature_c.max, 0)}` : 'not chosen'],
         ['neck', outcome.neck?.sentence ?? 'no vessel chosen'],
       ]
     : [];
@@ -78,7 +81,7 @@ export function WorkSheet({ must, timeZone }: { must: MustBody; timeZone: string
         {facts.map(([name, says]) => (
           <div key={name} className="grid grid-cols-[7.5rem_1fr] border-b py-px">
             <dt className="type-label">{name}</dt>
-            <dd className="font-mono text-[0.6875rem]/[1.125rem] font-semibold">{says}</dd>
+            <dd className="font-mono text-[0.6875rem]/[1.125rem] font-semibold">{name === 'neck' ? <Sentence>{says ?? ''}</Sentence> : says}</dd>
           </div>
         ))}
       </dl>
@@ -89,13 +92,13 @@ export function WorkSheet({ must, timeZone }: { must: MustBody; timeZone: string
           <li key={step.key} className="grid break-inside-avoid grid-cols-[1rem_1fr] pb-0.5 text-[0.6875rem]/[0.875rem]">
             <span>☐</span>
             <span>
-              {step.sentence} {step.caution}
+              <Sentence>{`${step.sentence} ${step.caution ?? ''}`}</Sentence>
             </span>
           </li>
         ))}
       </ol>
       <dl className="mt-2 grid grid-cols-3 gap-x-5 gap-y-1.5">
-        {PLACES.map((name) => (
+        {places().map((name) => (
           <div key={name} className="flex items-end gap-2">
             <dt className="type-tick shrink-0">{name}</dt>
             <dd className="h-6 flex-1 border-b" />
@@ -106,7 +109,7 @@ export function WorkSheet({ must, timeZone }: { must: MustBody; timeZone: string
         <ul className="mt-2 columns-2 gap-x-6">
           {notes.map((note) => (
             <li key={note} className="break-inside-avoid text-[0.6875rem]/[0.875rem]">
-              {note}
+              <Sentence>{note}</Sentence>
             </li>
           ))}
         </ul>

@@ -2,17 +2,20 @@
 
 import Link from 'next/link';
 import { useEffect, useState } from 'react';
+import { AskHow } from '@/components/how/AskHow';
 import { Box } from '@/components/ui/Box';
 import { Button } from '@/components/ui/Button';
 import { Sentence } from '@/components/ui/Sentence';
 import { Vessel } from '@/components/vessel/Vessel';
 import { ClientError } from '@/lib/client/fetcher';
 import { snoozeJob, takeJob } from '@/lib/client/jobs';
-import type { JobBody, jobSchema } from '@/lib/contracts/jobs';
+import type { jobSchema } from '@/lib/contracts/jobs';
+import { howOfCall } from '@/lib/core/how/judged';
+import { CALL_OF_KIND } from '@/lib/core/rounds/wanted';
 import { NECKS } from '@/lib/core/types';
 import { VESSEL_KINDS } from '@/lib/contracts/batches';
 import type { z } from 'zod';
-import { countdown, laterTimes, type RoundRow as Row } from './rows';
+import { about, countdown, laterTimes, type RoundRow as Row } from './rows';
 import type { Ticks } from './use-ticks';
 
 /** A clock that runs down by the second; said once, not every second. */
@@ -51,8 +54,6 @@ function JobVessel({ batch }: { batch: NonNullable<z.infer<typeof jobSchema>['ba
 }
 
 const firstName = (name: string) => name.trim().split(/\s+/)[0] ?? name;
-/** What the job is about, with the tag one looks for. */
-const about = (job: JobBody) => (job.batch ? `${job.batch.tag === null ? '' : `tag ${job.batch.tag}, `}${job.batch.name}` : job.lot ? `${job.lot.code}, ${job.lot.name}` : null);
 
 interface RoundRowProps {
   row: Row;
@@ -72,6 +73,7 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
   const saved = ticks.saved.has(job.id);
   const waiting = ticks.waiting.has(job.id);
   const mine = job.taken_by?.id === me;
+  const call = job.source === 'call' ? CALL_OF_KIND[job.kind] : undefined;
 
   async function send(act: () => Promise<unknown>) {
     setBusy(true);
@@ -85,9 +87,9 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
   }
 
   return (
-    <li className={`break-inside-avoid border-b px-(--margin) py-2 strip:flex strip:items-center strip:gap-6 print:py-0.5 ${row.late && !done ? 'bg-lit' : ''}`}>
+    <li className={`border-b px-(--margin) py-2 strip:flex strip:items-center strip:gap-6 ${row.late && !done ? 'bg-lit' : ''}`}>
       <div className="flex min-w-0 items-start gap-3 strip:flex-1">
-        <Box ticked={done} disabled={!mayDo} label={done ? `Take back: ${job.title}` : `Done: ${job.title}`} onTick={(on) => (on ? ticks.tick(job) : ticks.untick(job))} className="min-h-11 min-w-9 pt-3 print:min-h-0! print:pt-1.5" />
+        <Box ticked={done} disabled={!mayDo} label={done ? `Take back: ${job.title}` : `Done: ${job.title}`} onTick={(on) => (on ? ticks.tick(job) : ticks.untick(job))} className="min-h-11 min-w-9 pt-3" />
         <div className="min-w-0 flex-1 py-1">
           <p className="type-label text-ink2">
             <span className={row.late ? 'text-madder' : 'text-ink'} style={{ fontWeight: 700 }}>
@@ -95,7 +97,6 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
             </span>{' '}
             {row.note}
             {job.repeat_days && `, every ${job.repeat_days} days`}
-            {!job.taken_by && about(job) && <span className="hidden print:inline"> · {about(job)}</span>}
           </p>
           <p className="text-[1.0625rem]/[1.375rem] font-[560]">
             {job.batch ? (
@@ -106,26 +107,28 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
               <Sentence>{job.title}</Sentence>
             )}
           </p>
-          {job.note && <p className="type-reason text-ink2"><Sentence>{job.note}</Sentence></p>}
-          <p className={`type-label text-ink2 ${job.taken_by ? '' : 'print:hidden'}`}>
+          {job.note && (
+            <p className="type-reason text-ink2">
+              <Sentence>{job.note}</Sentence> {call && <AskHow tight of={`${job.title}: its call`} answers={() => [{ name: 'the rule of its call', says: job.batch?.name ?? '', how: howOfCall(call, []) }]} />}
+            </p>
+          )}
+          <p className="type-label text-ink2">
             {[about(job), job.taken_by ? `${mine ? 'you have' : `${firstName(job.taken_by.name)} has`} it` : 'nobody has it'].filter(Boolean).join(' · ')}
           </p>
         </div>
         {row.left !== null && !done && (
-          <span className="not-printed">
-            <Countdown dueAt={job.due_at} />
-          </span>
+          <Countdown dueAt={job.due_at} />
         )}
-        {job.batch && <span className="not-printed max-strip:hidden"><JobVessel batch={job.batch} /></span>}
+        {job.batch && <span className="max-strip:hidden"><JobVessel batch={job.batch} /></span>}
       </div>
       {done ? (
-        <div className="not-printed flex shrink-0 items-center justify-end gap-3">
+        <div className="flex shrink-0 items-center justify-end gap-3">
           <span role="status" className="type-label text-ink2">{saved ? 'Done and logged.' : waiting ? 'Done. Waits to be sent.' : 'Saving'}</span>
           <Button disabled={!saved && !waiting} onClick={() => ticks.untick(job)}>Take it back</Button>
         </div>
       ) : (
         mayDo && (
-          <div className="not-printed flex flex-wrap items-center justify-end gap-2 strip:max-w-[55%] strip:shrink-0">
+          <div className="flex flex-wrap items-center justify-end gap-2 strip:max-w-[55%] strip:shrink-0">
             {later && (
               <div role="group" aria-label={`Put off until: ${job.title}`} className="flex flex-wrap gap-2 max-strip:grid max-strip:w-full max-strip:grid-cols-2">
                 {laterTimes(now, timeZone).map((time) => (

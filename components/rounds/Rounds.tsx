@@ -14,6 +14,7 @@ import { useJobs } from '@/lib/client/jobs';
 import { AirNote } from './AirNote';
 import { CalendarFeed } from './CalendarFeed';
 import { NewJob } from './NewJob';
+import { PrintedRounds } from './PrintedRounds';
 import { RoundRow } from './RoundRow';
 import { countWords, dayStart, walk } from './rows';
 import { WaitingActs } from '@/components/offline/WaitingActs';
@@ -46,67 +47,72 @@ function Walk({ now, timeZone, me, mayDo }: { now: number; timeZone: string; me:
   const next = coming.map((job) => Date.parse(job.due_at) / 1000).sort((a, b) => a - b)[0];
   const close = () => setOpened(null);
 
+  const head = `${dayName(now, timeZone)}, ${clock(now, timeZone)}${jobs ? `: ${countWords(stops.flatMap((stop) => stop.rows).filter((row) => !ticks.ticked.has(row.job.id)))}` : ''}`;
+
   return (
-    <div className="work-sheet">
-      <PageHead title="Rounds" meta={`${dayName(now, timeZone)}, ${clock(now, timeZone)}${jobs ? `: ${countWords(stops.flatMap((stop) => stop.rows).filter((row) => !ticks.ticked.has(row.job.id)))}` : ''}`}>
-        <div className="not-printed flex flex-wrap gap-2">
-          <Button look="quiet" onClick={() => window.print()}>
-            Print
-          </Button>
-          <Button look="quiet" onClick={() => setOpened('calendar')}>
-            Calendar
-          </Button>
-          {mayDo && <Button onClick={() => setOpened('job')}>Add a job</Button>}
+    <>
+      {jobs && <PrintedRounds stops={stops} head={head} />}
+      <div className="not-printed">
+        <PageHead title="Rounds" meta={head}>
+          <div className="flex flex-wrap gap-2">
+            <Button look="quiet" onClick={() => window.print()}>
+              Print
+            </Button>
+            <Button look="quiet" onClick={() => setOpened('calendar')}>
+              Calendar
+            </Button>
+            {mayDo && <Button onClick={() => setOpened('job')}>Add a job</Button>}
+          </div>
+        </PageHead>
+        <div className="border-b bg-desk px-(--margin) py-2.5">
+          <FilterTabs
+            label="Show"
+            value={shown}
+            onChoose={setShown}
+            tabs={[
+              { value: 'today', name: 'Today', count: jobs ? dueToday.length - ticks.ticked.size : undefined },
+              { value: 'coming', name: 'Coming', count: jobs ? coming.length : undefined },
+              { value: 'done', name: 'Done' },
+            ]}
+          />
         </div>
-      </PageHead>
-      <div className="not-printed border-b bg-desk px-(--margin) py-2.5">
-        <FilterTabs
-          label="Show"
-          value={shown}
-          onChoose={setShown}
-          tabs={[
-            { value: 'today', name: 'Today', count: jobs ? dueToday.length - ticks.ticked.size : undefined },
-            { value: 'coming', name: 'Coming', count: jobs ? coming.length : undefined },
-            { value: 'done', name: 'Done' },
-          ]}
-        />
+        {shown === 'today' && <AirNote />}
+        <WaitingActs now={now} timeZone={timeZone} />
+        {ticks.failed && <FormError>{ticks.failed}</FormError>}
+        {error && !jobs ? (
+          <ErrorState title="The rounds did not load" onRetry={retry}>
+            {error.message} Nothing ticked is lost.
+          </ErrorState>
+        ) : !jobs ? (
+          <Haze height={200} className="m-(--margin)" label="Loading the jobs" />
+        ) : shown === 'done' ? (
+          <DoneList jobs={done.jobs} error={done.error} retry={done.retry} now={now} timeZone={timeZone} />
+        ) : stops.length === 0 ? (
+          <EmptyState title={shown === 'today' ? 'Nothing due today.' : 'Nothing is coming yet.'}>{shown === 'today' && next !== undefined ? `Next: ${when(next, now, timeZone)}.` : 'Jobs come from the calls, from clocks, and from people.'}</EmptyState>
+        ) : (
+          stops.map((stop) => (
+            <section key={stop.place} aria-label={stop.place}>
+              <GroupBar word={stop.place} note={stop.rows.length === 1 ? '1 job' : `${stop.rows.length} jobs`} />
+              <ol>
+                {stop.rows.map((row) => (
+                  <RoundRow key={row.job.id} row={row} ticks={ticks} mayDo={mayDo} me={me} now={now} timeZone={timeZone} />
+                ))}
+              </ol>
+            </section>
+          ))
+        )}
+        {opened === 'job' && (
+          <Sheet title="Add a job" onClose={close}>
+            <NewJob now={now} timeZone={timeZone} onDone={close} />
+          </Sheet>
+        )}
+        {opened === 'calendar' && (
+          <Sheet title="Rounds in a calendar" onClose={close}>
+            <CalendarFeed now={now} timeZone={timeZone} />
+          </Sheet>
+        )}
       </div>
-      {shown === 'today' && <AirNote />}
-      <WaitingActs now={now} timeZone={timeZone} />
-      {ticks.failed && <FormError>{ticks.failed}</FormError>}
-      {error && !jobs ? (
-        <ErrorState title="The rounds did not load" onRetry={retry}>
-          {error.message} Nothing ticked is lost.
-        </ErrorState>
-      ) : !jobs ? (
-        <Haze height={200} className="m-(--margin)" label="Loading the jobs" />
-      ) : shown === 'done' ? (
-        <DoneList jobs={done.jobs} error={done.error} retry={done.retry} now={now} timeZone={timeZone} />
-      ) : stops.length === 0 ? (
-        <EmptyState title={shown === 'today' ? 'Nothing due today.' : 'Nothing is coming yet.'}>{shown === 'today' && next !== undefined ? `Next: ${when(next, now, timeZone)}.` : 'Jobs come from the calls, from clocks, and from people.'}</EmptyState>
-      ) : (
-        stops.map((stop) => (
-          <section key={stop.place} aria-label={stop.place}>
-            <GroupBar word={stop.place} note={stop.rows.length === 1 ? '1 job' : `${stop.rows.length} jobs`} />
-            <ol>
-              {stop.rows.map((row) => (
-                <RoundRow key={row.job.id} row={row} ticks={ticks} mayDo={mayDo} me={me} now={now} timeZone={timeZone} />
-              ))}
-            </ol>
-          </section>
-        ))
-      )}
-      {opened === 'job' && (
-        <Sheet title="Add a job" onClose={close}>
-          <NewJob now={now} timeZone={timeZone} onDone={close} />
-        </Sheet>
-      )}
-      {opened === 'calendar' && (
-        <Sheet title="Rounds in a calendar" onClose={close}>
-          <CalendarFeed now={now} timeZone={timeZone} />
-        </Sheet>
-      )}
-    </div>
+    </>
   );
 }
 

@@ -18,6 +18,9 @@ export interface Stop {
   rows: RoundRow[];
 }
 
+/** What the job is about, with the tag one looks for. */
+export const about = (job: JobBody): string | null => (job.batch ? `${job.batch.tag === null ? '' : `tag ${job.batch.tag}, `}${job.batch.name}` : job.lot ? `${job.lot.code}, ${job.lot.name}` : null);
+
 /** The first second of the day that many days from the one of `at`. */
 export function dayStart(at: number, timeZone: string, days: number): number {
   const wall = wallTime(at, timeZone);

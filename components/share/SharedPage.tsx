@@ -4,7 +4,7 @@ import { useState, type CSSProperties } from 'react';
 import { dayWords, SPARKLE_WORDS, strengthWords } from '@/components/book/words';
 import { drinkHex } from '@/components/charts/palette';
 import { TastingSheet } from '@/components/tasting/TastingSheet';
-import { FOUND_WORDS, HOW_TASTED, spreadWords } from '@/components/tasting/words';
+import { FOUND_WORDS, spreadWords } from '@/components/tasting/words';
 import { Button } from '@/components/ui/Button';
 import { Facts, type Fact } from '@/components/ui/Facts';
 import { Select } from '@/components/ui/Field';
@@ -17,7 +17,13 @@ import { GroupBar } from '@/components/ui/Page';
 import { State } from '@/components/ui/StateMark';
 import { tasteShared, useShared } from '@/lib/client/tastings';
 import type { SharedBatch } from '@/lib/contracts/shares';
+import { how } from '@/lib/core/how/how';
+import { SOURCES } from '@/lib/core/how/sources';
+import { HOW_TASTED } from '@/lib/core/how/lots';
 import { FallPicture } from './FallPicture';
+
+const ORIGINAL = how('as the brewer told it, or the reading at the pitch, at 20 °C; the top of the picture', SOURCES.told);
+const LAST = how('last reading by hydrometer, else by the float, at 20 °C; where the picture ends', SOURCES.told);
 
 /** Days on a public page are those of the calendar everywhere: nobody's own zone is told. */
 const ZONE = 'UTC';
@@ -52,8 +58,8 @@ export function SharedPage({ token }: { token: string }) {
 function Shared({ shared, token, now }: { shared: SharedBatch; token: string; now: number }) {
   const day = (at: string) => dayWords(at, ZONE, now);
   const facts: Fact[] = [
-    { name: 'original gravity', says: shared.original_gravity?.toFixed(3) ?? 'not known' },
-    { name: 'gravity', says: shared.gravity?.toFixed(3) ?? 'not known' },
+    { name: 'original gravity', says: shared.original_gravity?.toFixed(3) ?? 'not known', how: shared.original_gravity === null ? null : ORIGINAL },
+    { name: 'gravity', says: shared.gravity?.toFixed(3) ?? 'not known', how: shared.gravity === null ? null : LAST },
     { name: 'strength', says: strengthWords(shared.abv_percent), how: shared.how },
     { name: 'pitched', says: shared.pitched_at ? day(shared.pitched_at) : 'not yet' },
   ];

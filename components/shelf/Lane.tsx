@@ -2,6 +2,8 @@
 
 import Link from 'next/link';
 import type { Span } from '@/components/charts/picture';
+import { AskHow } from '@/components/how/AskHow';
+import { answersOfLane } from '@/components/how/judged';
 import { LaneMuted } from '@/components/messages/BatchMute';
 import type { PageLayout } from '@/components/ui/layout';
 import { Sentence } from '@/components/ui/Sentence';
@@ -9,7 +11,7 @@ import { State } from '@/components/ui/StateMark';
 import { vesselOf } from '@/components/vessel/describe';
 import { Vessel } from '@/components/vessel/Vessel';
 import { LaneButton, LaneCall } from './LaneCall';
-import { dayOf, laneFigures, litres, type LaneView } from './lanes';
+import { dayWords, laneFigures, litres, type LaneView } from './lanes';
 import { LanePicture } from './LanePicture';
 
 export interface LaneProps {
@@ -45,11 +47,14 @@ function Name({ view, className }: { view: LaneView; className: string }) {
   );
 }
 
+/** Where the figures of the lane come from; above the link that covers it. */
+const HowLane = ({ view: { lane } }: Pick<LaneProps, 'view'>) => <AskHow tight of={`figures of ${lane.name}`} answers={() => answersOfLane(lane)} className="z-10 shrink-0" />;
+
 const paper = (view: LaneView) => (view.attention.group === 'now' ? 'bg-lit' : 'bg-sheet');
 
 function Meta({ view, now, timeZone, low }: Pick<LaneProps, 'view' | 'now' | 'timeZone'> & { low: boolean }) {
   const { lane } = view;
-  const day = dayOf(lane.pitched_at, now, timeZone);
+  const day = dayWords(lane.pitched_at, now, timeZone);
   if (low) return <span className="type-label text-ink2">{lane.tag === null ? `${day}, ${litres(lane.volume_l)}` : `${day}, tag ${lane.tag}`}</span>;
   return (
     <span className="type-label text-ink2">
@@ -77,7 +82,10 @@ export function Lane({ view, span, now, timeZone, staleAt, mayTake, layout }: La
           <Vessel vessel={vesselOf(lane, rackedWhenFinished(view))} height={VESSEL[group]} />
         </div>
         <div className={`flex min-w-0 flex-col ${middle ? 'gap-2' : 'justify-between'} ${low ? 'pb-1 pt-[3px]' : group === 'now' ? 'pb-[19px] pt-[6px]' : 'pb-[14px] pt-[6px]'}`}>
-          <Name view={view} className={low ? 'type-name-low' : 'type-name'} />
+          <div className="flex items-baseline justify-between gap-2">
+            <Name view={view} className={`min-w-0 ${low ? 'type-name-low' : 'type-name'}`} />
+            <HowLane view={view} />
+          </div>
           <div className="flex flex-wrap items-end justify-between gap-x-2">
             <Meta view={view} now={now} timeZone={timeZone} low={low} />
             <span className="ml-auto flex flex-col items-end">
@@ -122,7 +130,10 @@ export function PhoneLane({ view, span, now, timeZone, staleAt, mayTake }: LaneP
                 {view.when}
                 <LaneMuted batchId={lane.id} />
               </span>
-              <span className="type-label whitespace-nowrap text-ink2">{staleAt === null ? dayOf(lane.pitched_at, now, timeZone) : figures.under}</span>
+              <span className="type-label flex items-baseline gap-3 whitespace-nowrap text-ink2">
+                <HowLane view={view} />
+                {staleAt === null ? dayWords(lane.pitched_at, now, timeZone) : figures.under}
+              </span>
             </div>
             <p className={`mt-1 text-balance ${group === 'now' ? 'text-[1.125rem]/[1.4375rem] font-[670]' : low ? 'text-[0.9375rem]/[1.25rem] font-[640]' : 'text-[1.0625rem]/[1.375rem] font-[660]'}`}>
               <Sentence strong>{headline.replace(/\.$/, '')}</Sentence>

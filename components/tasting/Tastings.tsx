@@ -9,8 +9,9 @@ import { Haze } from '@/components/ui/Haze';
 import { How } from '@/components/ui/How';
 import { GroupBar } from '@/components/ui/Page';
 import { createTasting, removeTasting, useTastings } from '@/lib/client/tastings';
+import { HOW_TASTED } from '@/lib/core/how/lots';
 import { TastingSheet } from './TastingSheet';
-import { ASPECTS, FOUND_WORDS, HOW_TASTED, spreadWords, type Found } from './words';
+import { ASPECTS, FOUND_WORDS, spreadWords, type Found } from './words';
 
 /** What people found in a lot: the average with its spread, and each note. */
 export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; timeZone: string; now: number; mayTaste: boolean }) {

@@ -1,5 +1,3 @@
-import { how, type How } from '@/lib/core/how/how';
-import { SOURCES } from '@/lib/core/how/sources';
 import type { SPARKLES_FOUND, TastingSummary } from '@/lib/contracts/tastings';
 
 export type Found = (typeof SPARKLES_FOUND)[number];
@@ -7,9 +5,6 @@ export const FOUND_WORDS: Record<Found, string> = { flat: 'flat', less: 'less th
 
 export const ASPECTS = ['look', 'smell', 'taste', 'balance'] as const;
 export type Aspect = (typeof ASPECTS)[number];
-
-/** Where an average of tasting notes comes from. */
-export const HOW_TASTED: How = how('mean of those who gave a figure; after the ± their standard deviation, from two on', SOURCES.told);
 
 type Spread = TastingSummary['score'];
 /** `7.5 ± 0.8 of 10, by 3` */

@@ -66,7 +66,8 @@ export function useLabelFacts(lotId: string | null) {
 export const labelsPdfUrl = (lotId: string, query: Partial<z.input<typeof labelQuery>>) => withQuery(`/api/v1/lots/${lotId}/labels.pdf`, query as Record<string, string | number | null | undefined>);
 
 /** Batches over each other, aligned at their pitch. */
-export function useCompare(batchIds: readonly string[], points?: number) {
-  const { data, ...rest } = useResource<CompareBody>(batchIds.length > 0 ? withQuery('/compare', { batches: batchIds.join(','), points }) : null);
+/** @param hours of the readings, since the pitch; absent: all */
+export function useCompare(batchIds: readonly string[], points?: number, hours?: { from: number; to: number }) {
+  const { data, ...rest } = useResource<CompareBody>(batchIds.length > 0 ? withQuery('/compare', { batches: batchIds.join(','), points, from_hour: hours?.from, to_hour: hours?.to }) : null);
   return { compared: data?.items, ...rest };
 }

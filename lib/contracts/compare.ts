@@ -3,13 +3,16 @@ import { batchSchema, ENTRY_KINDS } from './batches';
 import { id } from './common';
 import { howSchema } from './figures';
 
-/** `GET /api/v1/compare?batches=a,b`. */
+/** `GET /api/v1/compare?batches=a,b[&from_hour=&to_hour=]`. */
 export const compareQuery = z.object({
   batches: z
     .string()
     .transform((value) => value.split(','))
     .pipe(z.array(id).min(1, 'name at least one batch').max(8, 'at most 8 batches lie over each other well')),
   points: z.coerce.number().int().min(10).max(2000).default(300),
+  /** Readings of a part only, hours since the pitch of each: all the points for what is looked at closely. */
+  from_hour: z.coerce.number().min(0).max(100_000).optional(),
+  to_hour: z.coerce.number().min(0).max(100_000).optional(),
 });
 
 /** Batches laid over each other, aligned at their pitch. */

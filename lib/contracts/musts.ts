@@ -109,6 +109,9 @@ export const mustSummary = z.object({
   abv_percent: rangeSchema.nullable(),
   volume_l: rangeSchema.nullable(),
   vessel_l: z.number().nullable(),
+  /** Lines that the figures come from, and the yeast that they end by. */
+  lines: z.number().int(),
+  yeast: z.string().nullable(),
   batches: z.number().int(),
   archived: z.boolean(),
 });

@@ -1,5 +1,6 @@
 import { readdirSync } from 'node:fs';
 import { join } from 'node:path';
+import type { Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Actor } from '@/lib/auth/policies';
 import { expectAccessible, expectNoSidewaysScroll, useBrowser } from '../support/browser';
@@ -46,6 +47,31 @@ const SCREENS: Record<string, ((there: Things) => string) | null> = {
   ...Object.fromEntries(['api', 'audit', 'cellar', 'data', 'messages', 'people', 'profile', 'security', 'sensors', 'shares', 'tokens', 'webhooks'].map((part) => [`settings/${part}`, () => `/settings/${part}`])),
 };
 
+/** Screens of the job, from the must to the opened bottle: what they reckon can be asked how. */
+const RECKONS = ['shelf', 'rounds', 'batches/[id]', 'batches/[id]/work', 'bench/[id]', 'book', 'book/[id]', 'labels', 'compare', 'musts', 'musts/[id]'];
+
+/** A figure with its unit, or a gravity, that stands by itself. */
+const FIGURE = /^[≈±−]?\s?\d+(?:\.\d+)?(?:[–-]\d+(?:\.\d+)?)?\s?(?:%|% vol|L|L\/h|g|g\/L|mg\/L|bar|volumes|points|°C|°Bx|°P)(?:[ ,].*)?$|^[01]\.\d{3}$/;
+/** What somebody told or read stands as it is: the log, readings by hand, a chart's numbers, drawings, what is typed; and a catalogue's usual ratings, each with its note below. */
+const AS_TOLD = ['section[aria-label="Log"]', '[aria-label="Readings by hand"]', '[aria-label="Numbers of the chart"]', '[aria-label="The curves as a table"]', 'svg', 'select', 'button', 'p', 'label', '.heard-only', '[aria-hidden="true"]', '.work-sheet', '.uplot'].join(',');
+
+/** Figures on the page that nobody can ask how they came about. */
+const unasked = (page: Page): Promise<string[]> =>
+  page.evaluate(
+    ({ figure, told }) => {
+      const shape = new RegExp(figure);
+      const asks = (place: Element | null) => [...(place?.querySelectorAll('button, summary') ?? [])].some((one) => one.textContent?.trim().startsWith('how?'));
+      return [...document.querySelectorAll('main *')]
+        .filter((one) => one.childElementCount === 0 && one.getClientRects().length > 0 && !one.closest(told) && shape.test(one.textContent?.trim() ?? ''))
+        .filter((one) => {
+          const row = one.closest('li, tr, dl, fieldset, header, form');
+          return !asks(row) && !asks((row?.parentElement ?? one).closest('section, header, aside, form, li'));
+        })
+        .map((one) => `${one.textContent?.trim()} in ${one.closest('li, tr, dl, section')?.textContent?.trim().slice(0, 60)}`);
+    },
+    { figure: FIGURE.source, told: AS_TOLD },
+  );
+
 describe('every screen', () => {
   const db = useDatabase();
   const browser = useBrowser();
@@ -80,4 +106,19 @@ describe('every screen', () => {
     }
     await context.close();
   }, 600_000);
+
+  it('answers how for every figure that it reckons', async () => {
+    const { page, context } = await browser.visitAs(keeper.personId, web.url, {});
+    const seen = new Set<string>();
+    for (const screen of RECKONS) {
+      await page.goto(`${web.url}${SCREENS[screen]!(there)}`);
+      await page.getByRole('heading').first().waitFor();
+      await page.waitForLoadState('networkidle').catch(() => undefined);
+      expect(await unasked(page), screen).toEqual([]);
+      if ((await page.locator('main').getByText(/^how\?/).count()) > 0) seen.add(screen);
+    }
+    // Were the pages empty there would be nothing to ask.
+    expect([...seen].length).toBeGreaterThanOrEqual(RECKONS.length - 2);
+    await context.close();
+  }, 300_000);
 });

@@ -152,6 +152,8 @@ describe('batches laid over each other', () => {
     expect(items.map((item) => item.hours)).toEqual([[0, 24, 48], [0, 24, 48]]);
     expect(items[0]!.gravity).toEqual(items[1]!.gravity);
     expect(items[1]!.by_hand.map((item) => item.hour)).toEqual([31 * 24, 957.6]);
+    const { items: near } = await compareBatches(brewer, { batches: [late.id, early.id], points: 100, from_hour: 12, to_hour: 30 });
+    expect(near.map((item) => item.hours)).toEqual([[24], [24]]);
     const stranger = await buildMember('keeper');
     await expect(compareBatches(stranger, { batches: [late.id], points: 100 })).rejects.toBeInstanceOf(NotFoundError);
   });

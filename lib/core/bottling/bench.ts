@@ -56,8 +56,8 @@ export interface BottlePicture {
   warm: PressurePoint;
   /** At the warmest place, all the sugar left fermented. */
   worst: PressurePoint;
-  /** What the sugar for fizz adds to its strength at most, % vol. */
-  abvAddedPercent: number;
+  /** The drink that its pressures are reckoned for: a little stronger than in the vessel, by the sugar for fizz. */
+  asBottled: DrinkForGas;
 }
 
 export const PROBLEM_KINDS = ['not_done', 'stopped_high', 'never_under_pressure', 'over_rating', 'over_rating_at_worst', 'rating_not_confirmed', 'stabilised_and_primed', 'nothing_to_fill'] as const;

@@ -5,7 +5,7 @@ import type { Range } from '../units/range';
 import { roundDown, roundUp } from '../units/rounding';
 import type { BenchBottle, BenchDose, BenchPicture, BenchRequest, BottlePicture, PressurePoint, Problem } from './bench';
 import { BOTTLES, holds, PRESSURE_CAUTIONS, type Rating } from './bottles';
-import { drinkPressure } from './co2';
+import { drinkPressure, type DrinkForGas } from './co2';
 import { planBottles } from './plan';
 import { abvFromPriming, doseFor, DROPS, gasFromSugar } from './priming';
 import { gasFromPoints } from './remaining';
@@ -40,16 +40,17 @@ function sugarGPerL(request: BenchRequest, bottle: BenchBottle, residualHi: numb
   }
 }
 
-function pressurePoint(volumes: number, celsius: number, request: BenchRequest, abvAdded: number): PressurePoint {
-  const { gaugeBar, how: origin } = drinkPressure(volumes, celsius, { ...request.drink, abvPercent: Math.min(30, request.drink.abvPercent + abvAdded) });
+function pressurePoint(volumes: number, celsius: number, drink: DrinkForGas): PressurePoint {
+  const { gaugeBar, how: origin } = drinkPressure(volumes, celsius, drink);
   return { bar: roundUp(Math.max(0, gaugeBar), 0.1), celsius, how: origin };
 }
 
-function pictureOf(request: BenchRequest, bottle: BenchBottle, count: number, residual: Range, remaining: RangeFigure, litres: number): BottlePicture {
+function pictureOf(request: BenchRequest, bottle: BenchBottle, count: number, residual: Range, remaining: RangeFigure, litres: number): BottlePicture & { abvAdded: number } {
   const sugar = request.priming.way === 'weighed' ? request.priming.sugar : DROPS;
   const gPerL = sugarGPerL(request, bottle, residual.hi, litres);
   const added = gasFromSugar(sugar, gPerL);
   const abvAdded = abvFromPriming(sugar, gPerL.hi);
+  const asBottled = { ...request.drink, abvPercent: Math.min(30, request.drink.abvPercent + abvAdded) };
   const volumes = { lo: residual.lo + added.lo, value: residual.value + added.value, hi: residual.hi + added.hi };
   const more = gasFromPoints(remaining.value).value.hi;
   const worstVolumes = volumes.hi + more;
@@ -74,10 +75,11 @@ function pictureOf(request: BenchRequest, bottle: BenchBottle, count: number, re
         ['may still ferment, at most', remaining.value.hi, 'points'],
       ]),
     ),
-    cellar: pressurePoint(volumes.hi, request.cellarC, request, abvAdded),
-    warm: pressurePoint(volumes.hi, request.warmestStoreC, request, abvAdded),
-    worst: pressurePoint(worstVolumes, request.warmestStoreC, request, abvAdded),
-    abvAddedPercent: abvAdded,
+    cellar: pressurePoint(volumes.hi, request.cellarC, asBottled),
+    warm: pressurePoint(volumes.hi, request.warmestStoreC, asBottled),
+    worst: pressurePoint(worstVolumes, request.warmestStoreC, asBottled),
+    asBottled,
+    abvAdded,
   };
 }
 
@@ -98,12 +100,12 @@ export function work(request: BenchRequest): Worked {
   );
   const filled = pictures.filter((p) => p.count > 0);
   const problems = [...batchProblems(request, filled), ...filled.flatMap((p) => bottleProblems(request, p))];
-  const abvAddedPercent = Math.max(0, ...filled.map((p) => p.abvAddedPercent));
+  const abvAddedPercent = Math.max(0, ...filled.map((p) => p.abvAdded));
   const worstBar = Math.max(0, ...filled.map((p) => p.worst.bar));
   return {
     picture: {
       plan,
-      bottles: filled,
+      bottles: filled.map(({ abvAdded: _abvAdded, ...picture }) => picture),
       residual,
       remaining,
       cautions: worstBar > 0.5 ? PRESSURE_CAUTIONS : [],

@@ -16,6 +16,9 @@ const AHEAD_MS = DAY;
 
 export type WantedKind = 'reading' | 'start' | 'neck' | 'stalled' | 'temperature' | 'sensor' | 'rack' | 'bottle' | 'airlock' | 'feed';
 
+/** The call that a job of the program comes from. */
+export const CALL_OF_KIND: Partial<Record<string, CallName>> = { start: 'started', neck: 'neck', stalled: 'stalled', temperature: 'temperature', sensor: 'sensor', rack: 'rack', bottle: 'bottle' };
+
 export interface Wanted {
   kind: WantedKind;
   source: 'call' | 'schedule';

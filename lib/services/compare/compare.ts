@@ -1,4 +1,4 @@
-import { Entry } from '@/db/models';
+import { Entry, type Batch } from '@/db/models';
 import { keptCurve } from '@/db/queries/batch-states';
 import { findBatches } from '@/db/queries/batches';
 import { findLots } from '@/db/queries/lots';
@@ -27,16 +27,24 @@ const hoursFrom = (zero: number, seconds: number) => Number(((seconds - zero) / 
 export async function compareBatches(actor: Actor, query: z.infer<typeof compareQuery>, clock: Clock = systemClock): Promise<CompareBody> {
   authorize(actor, 'batches.read');
   const items: CompareBody['items'] = [];
-  for (const id of [...new Set(query.batches)]) items.push(await one(actor, id, query.points, clock));
+  for (const id of [...new Set(query.batches)]) items.push(await one(actor, id, query, clock));
   return { items };
 }
 
-async function one(actor: Actor, id: string, points: number, clock: Clock): Promise<CompareBody['items'][number]> {
+/** From the pitch to the end, or the part of it that is asked for. */
+function spanOf({ pitchedAt, endedAt }: Pick<Batch, 'pitchedAt' | 'endedAt'>, { from_hour: from, to_hour: to }: z.infer<typeof compareQuery>): { from?: string; to?: string } {
+  if (!pitchedAt) return endedAt ? { to: iso(endedAt) } : {};
+  const at = (hour: number) => pitchedAt.getTime() + hour * HOUR_S * 1000;
+  const last = Math.min(to === undefined ? Infinity : at(to), endedAt?.getTime() ?? Infinity);
+  return { from: iso(at(from ?? 0)), ...(Number.isFinite(last) && { to: iso(last) }) };
+}
+
+async function one(actor: Actor, id: string, query: z.infer<typeof compareQuery>, clock: Clock): Promise<CompareBody['items'][number]> {
   const batch = await loadBatch(actor.cellarId, id);
   const [row] = await findBatches({ cellarId: actor.cellarId, id, limit: 1 });
   if (!row) throw new NotFoundError('batch');
   const state = await drinkState(batch, batch.endedAt ?? new Date(clock.now()));
-  const series = await seriesOf(actor.cellarId, id, { points, ...(batch.pitchedAt && { from: iso(batch.pitchedAt) }), ...(batch.endedAt && { to: iso(batch.endedAt) }) }, clock);
+  const series = await seriesOf(actor.cellarId, id, { points: query.points, ...spanOf(batch, query) }, clock);
   const entries = await Entry.findAll({ where: { batchId: id, removedAt: { [Op.is]: null } }, order: [['at', 'ASC']] });
   const lots = await findLots({ cellarId: actor.cellarId, batchId: id, limit: 100 });
   const zero = batch.pitchedAt ? batch.pitchedAt.getTime() / 1000 : null;

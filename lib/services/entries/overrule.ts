@@ -8,7 +8,7 @@ import type { Overruling } from '@/lib/core/calls/overruled';
 import type { CallName } from '@/lib/core/types';
 import { ConflictError } from '@/lib/errors';
 import { clearAlert } from '../alerts/resolve';
-import { CALL_OF_KIND } from '../jobs/take';
+import { CALL_OF_KIND } from '@/lib/core/rounds/wanted';
 
 /** What the program said when it was overruled: the log keeps both. */
 export async function saidThen(batch: Batch, call: CallName, transaction: Transaction): Promise<NonNullable<EntryDetail['said']>> {

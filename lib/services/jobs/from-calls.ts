@@ -1,11 +1,10 @@
 import { Op, type Transaction } from 'sequelize';
 import { Alert, FiningRun, Job, type Batch, type Entry } from '@/db/models';
 import { finingState } from '@/lib/core/additions/fining';
-import { wantedJobs, type Wanted } from '@/lib/core/rounds/wanted';
+import { CALL_OF_KIND, wantedJobs, type Wanted } from '@/lib/core/rounds/wanted';
 import type { Assessment, Instant } from '@/lib/core/types';
 import { notifyChange } from '../changes';
 import { feedOf } from './feed';
-import { CALL_OF_KIND } from './take';
 
 /** A call that flickers does not drop its job before it was gone this long, ms. */
 const KEPT_MS = 3 * 3_600_000;

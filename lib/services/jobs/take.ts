@@ -4,15 +4,12 @@ import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
 import type { JobBody } from '@/lib/contracts/jobs';
-import type { CallName } from '@/lib/core/types';
+import { CALL_OF_KIND } from '@/lib/core/rounds/wanted';
 import { ConflictError } from '@/lib/errors';
 import { acknowledgeAlert } from '../alerts/acknowledge';
 import { auditBy } from '../audit/write';
 import { notifyChange } from '../changes';
 import { jobBody, loadJob } from './load';
-
-/** The call that a job of the program comes from. */
-export const CALL_OF_KIND: Partial<Record<string, CallName>> = { start: 'started', neck: 'neck', stalled: 'stalled', temperature: 'temperature', sensor: 'sensor', rack: 'rack', bottle: 'bottle' };
 
 /** Takes a job in hand, its alert with it, or leaves it to others. Taken by somebody else it can be taken over. */
 export async function takeJob(actor: Actor, id: string, taken: boolean, clock: Clock = systemClock): Promise<JobBody> {

@@ -3,6 +3,7 @@ import type { LotBody } from '@/lib/contracts/lots';
 import { howOfHolds } from '@/lib/core/bottling/bottles';
 import { drinkPressure } from '@/lib/core/bottling/co2';
 import { how } from '@/lib/core/how/how';
+import { howOfLotCost, howOfLotGravity, howOfLotStrength } from '@/lib/core/how/lots';
 import { practice, SOURCES } from '@/lib/core/how/sources';
 import type { LotBottle } from '@/db/models';
 import type { LotRow } from '@/db/queries/lots';
@@ -14,19 +15,8 @@ export function howOfLot(row: Pick<LotRow, 'originalGravity' | 'finalGravity' | 
   const { dose } = bench.shown;
   const sugar = dose.way === 'weighed' ? `${dose.total_g.toFixed(0)} g of ${dose.sugar.name}` : dose.way === 'drops' ? `${dose.total_drops} drops` : 'none';
   return {
-    strength: snakeKeys(
-      how('Balling from the gravity with all the sugar that went in and the last hydrometer reading, each good to half a division, and what the sugar for fizz adds', SOURCES.balling, [
-        ['original gravity, with what was added', row.originalGravity, 'SG'],
-        ['final gravity', row.finalGravity, 'SG'],
-        ['sugar for fizz', sugar, ''],
-      ]),
-    ),
-    gravity: snakeKeys(
-      how('first: the must’s gravity with all the sugar that went in until it was bottled; last: the hydrometer reading that it was bottled by', SOURCES.told, [
-        ['original gravity, with what was added', row.originalGravity, 'SG'],
-        ['final gravity', row.finalGravity, 'SG'],
-      ]),
-    ),
+    strength: snakeKeys(howOfLotStrength(row, sugar)),
+    gravity: snakeKeys(howOfLotGravity(row)),
     sparkle: snakeKeys(
       how(`sparkling from ${SPARKLING_FROM} volumes of gas, lightly sparkling from ${LIGHT_FROM}, by what was wanted; where nothing was, by what is likely in the bottle`, SOURCES.ownRule, [
         ['wanted', bench.shown.wanted_volumes, 'volumes'],
@@ -34,12 +24,14 @@ export function howOfLot(row: Pick<LotRow, 'originalGravity' | 'finalGravity' | 
       ]),
     ),
     cost: snakeKeys(
-      how('part of the must sheet’s cost that is in these bottles + what the bottling cost, ÷ litres bottled; one bottle by its size', SOURCES.told, [
-        ['from the must sheet', cost.must && Number(cost.must.value.toFixed(2)), ''],
-        ['every line of it has a cost', cost.known ? 'yes' : 'no', ''],
-        ['bottles, caps and sugar', cost.other, ''],
-        ['bottled', row.volumeL, 'L'],
-      ]),
+      howOfLotCost(
+        [
+          ['from the must sheet', cost.must && Number(cost.must.value.toFixed(2)), ''],
+          ['every line of it has a cost', cost.known ? 'yes' : 'no', ''],
+          ['bottles, caps and sugar', cost.other, ''],
+        ],
+        row.volumeL,
+      ),
     ),
     ready: snakeKeys(
       how('with sugar for fizz 14 days at 20 °C, slower in the cold by 2.2 times for 10 °C, never less; still, 7 days. Then as somebody set it', practice('two weeks in the warm, then a cool place'), [

@@ -17,6 +17,7 @@ export async function listMusts(actor: Actor, query: z.infer<typeof mustQuery>):
 function present(row: MustRow): MustList['items'][number] {
   // Written with the version, in this form.
   const sketch = row.sketch as Partial<Sketch>;
+  const sheet = keptSheet(row.body);
   return {
     id: row.id,
     version_id: row.versionId,
@@ -29,7 +30,9 @@ function present(row: MustRow): MustList['items'][number] {
     original_gravity: sketch.originalGravity ?? null,
     abv_percent: sketch.abv ?? null,
     volume_l: sketch.volume ?? null,
-    vessel_l: keptSheet(row.body).vessel_l,
+    vessel_l: sheet.vessel_l,
+    lines: sheet.lines.length,
+    yeast: sheet.yeast?.name ?? null,
     batches: row.batches,
     archived: row.archivedAt !== null,
   };

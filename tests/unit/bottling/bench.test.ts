@@ -1,8 +1,9 @@
 import fc from 'fast-check';
 import { describe, expect, expectTypeOf, test } from 'vitest';
 import type { BenchOverridden, BenchRequest, BenchSafe, BenchStop } from '@/lib/core/bottling/bench';
-import { BOTTLES, holds } from '@/lib/core/bottling/bottles';
+import { BOTTLES, holds, howOfHolds } from '@/lib/core/bottling/bottles';
 import { drinkPressure } from '@/lib/core/bottling/co2';
+import { pressureByDay } from '@/lib/core/bottling/conditioning';
 import { DROPS, gasFromSugar, primingSugar, USUAL_DROP_G, usualDrops } from '@/lib/core/bottling/priming';
 import { judgeBench, overrideStop } from '@/lib/core/bottling/verdict';
 import { benchRequest, bottle, DAY, NOW } from '../../support/bench';
@@ -45,11 +46,22 @@ describe('a finished batch in sound bottles', () => {
 
   test('every figure of the picture answers how', () => {
     const { bottles, residual, remaining } = safe(benchRequest());
-    for (const origin of [residual.how, remaining.how, ...bottles.flatMap((b) => [b.volumes.how, b.worstVolumes.how, b.cellar.how, b.warm.how, b.worst.how])]) {
+    for (const origin of [residual.how, remaining.how, ...bottles.flatMap((b) => [b.volumes.how, b.worstVolumes.how, b.cellar.how, b.warm.how, b.worst.how, howOfHolds(b.choice)])]) {
       expect(origin.formula.length).toBeGreaterThan(5);
       expect(origin.source.length).toBeGreaterThan(5);
       expect(origin.inputs.length).toBeGreaterThan(0);
     }
+  });
+
+  test('the weeks end at the worst case of the table, with what the sugar adds to the strength', () => {
+    const request = benchRequest();
+    const { bottles, residual, remaining } = safe(request);
+    const [picture] = bottles;
+    if (!picture) throw new Error('a bottle expected');
+    expect(picture.asBottled.abvPercent).toBeGreaterThan(request.drink.abvPercent);
+    const weeks = pressureByDay({ residualVolumes: residual.value.hi, addedVolumes: picture.volumes.value.hi - residual.value.hi, remainingPoints: remaining.value.hi, drink: picture.asBottled }, NOW, request.warmestStoreC, 3000);
+    expect(weeks.at(-1)?.worstBar).toBeLessThanOrEqual(picture.worst.bar + 1e-9);
+    expect(weeks.at(-1)?.worstBar).toBeGreaterThan(picture.worst.bar - 0.1 - 1e-6);
   });
 
   test('the worst case is the sugar left at 0.51 volumes a point on top of what was asked', () => {

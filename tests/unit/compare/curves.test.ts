@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { curveOf, tableDays, valueAt, type Compared } from '@/components/compare/curves';
+import { closer, curveOf, tableDays, valueAt, type Compared } from '@/components/compare/curves';
 
 function compared(over: Partial<Compared> = {}): Compared {
   return {
@@ -47,6 +47,15 @@ describe('a curve of the comparison', () => {
 
   it('sets a post on the curve, and none where the curve has not come to', () => {
     expect(curveOf(compared(), 'gravity', '#000').posts).toEqual([{ day: 1.5, value: expect.closeTo(1.02, 9) as number, letter: 'R', kind: 'rack' }]);
+  });
+
+  it('has all the readings of a part that is looked at closely, and the others around it', () => {
+    const near = compared({ hours: [20, 24, 28], gravity: [1.034, 1.03, 1.026], temperature: [18, 18, 18] });
+    expect(closer(compared(), near)).toMatchObject({ hours: [0, 20, 24, 28, 48], gravity: [1.05, 1.034, 1.03, 1.026, 1.01] });
+    expect(closer(compared(), compared({ hours: [], gravity: [], temperature: [] }))).toEqual(compared());
+    expect(closer(compared(), undefined)).toEqual(compared());
+    const last = compared({ hours: [40, 48, 60], gravity: [1.015, 1.01, 1.009], temperature: [20, 20, 20] });
+    expect(closer(compared(), last).hours).toEqual([0, 24, 40, 48, 60]);
   });
 
   it('says nothing before and after a curve', () => {

@@ -1,7 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { splitFigures } from '@/components/ui/figures';
-import { figureRead, gravityDoubt, gravityEnds, gravityText, gravityTyped, temperatureText, volumeText } from '@/components/ui/units';
+import { figureRead, gravityDoubt, gravityEnds, gravityText, gravityTyped, temperatureText, volumeEnds, volumeText } from '@/components/ui/units';
 import { USUAL_UNITS, type ChosenUnits } from '@/lib/core/units/chosen';
 
 const others: ChosenUnits = { gravity: 'plato', temperature: 'f', volume: 'us_gal' };
@@ -27,6 +27,9 @@ describe('figures in the units that a person reads', () => {
     expect(volumeText(3.785411784, undefined, others)).toBe('1 gal');
     expect(volumeText(4.54609, undefined, { ...others, volume: 'imp_gal' })).toBe('1 gal');
     expect(volumeText(4.5, undefined, USUAL_UNITS)).toBe('4.5 L');
+    expect(volumeText(-0.42, 1, USUAL_UNITS)).toBe('−0.4 L');
+    expect(volumeEnds({ lo: 3.785411784, hi: 7.570823568 }, others)).toBe('1 to 2 gal');
+    expect(volumeEnds({ lo: 4.51, hi: 4.52 }, USUAL_UNITS)).toBeUndefined();
   });
 
   it('reads whole sentences, with spreads and spans, and leaves all else alone', () => {
