@@ -29,7 +29,7 @@ const MOST_DATA = 300;
 const KEEP = [
   { path: /^\/api\/v1\/shelf$/, query: false },
   { path: /^\/api\/v1\/batches\/[^/]+\/(series|judgement|assessment)$/, query: false },
-  { path: /^\/api\/v1\/(me|batches|alerts|jobs|mutes|sensors|members|lots|places)$/, query: true },
+  { path: /^\/api\/v1\/(me|batches|alerts|jobs|mutes|sensors|sensor-health|members|lots|places)$/, query: true },
   { path: /^\/api\/v1\/batches\/[^/]+(\/(entries|assessments|drink|family|finings))?$/, query: true },
 ];
 /** Pages that stand on nobody's sign-in, or are somebody's key. */
@@ -70,6 +70,8 @@ async function stamped(response) {
 /** @param {URL} url */
 function keyOf(url) {
   const rule = KEEP.find(({ path }) => path.test(url.pathname));
+  // Behind its first part a long shelf would stand in that one's place.
+  if (url.pathname === '/api/v1/shelf' && url.searchParams.has('skip')) return null;
   return rule ? `${url.origin}${url.pathname}${rule.query ? url.search : ''}` : null;
 }
 

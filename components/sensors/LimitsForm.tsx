@@ -59,7 +59,7 @@ export function LimitsPage() {
   const { data, loading, error, retry } = useSensorLimits();
   return (
     <section aria-label="When to be told">
-      <GroupBar word="A sensor’s page says so when" />
+      <GroupBar word="The list of sensors and a sensor’s page say so when" />
       {loading && <Haze height={80} label="Loading the limits" className="mx-(--margin) my-3" />}
       {error && !data && (
         <ErrorState title="The limits did not load" onRetry={retry}>

@@ -1,16 +1,21 @@
 'use client';
 
 import Link from 'next/link';
+import { useMemo } from 'react';
 import { LinkButton } from '@/components/ui/Button';
 import { Haze } from '@/components/ui/Haze';
 import { EmptyState, ErrorState } from '@/components/ui/Notice';
 import { useNow } from '@/components/ui/now';
 import { PageHead } from '@/components/ui/Page';
+import { Sentence } from '@/components/ui/Sentence';
 import { State } from '@/components/ui/StateMark';
-import type { SensorBody } from '@/lib/contracts/sensors';
+import type { SensorBody, SensorHealthList, SensorLimits } from '@/lib/contracts/sensors';
 import { useMe } from '@/lib/client/me';
-import { useSensors } from '@/lib/client/sensors';
-import { cellWords, gravityWords, heardWords, linkWords, sensorState, temperatureWords } from './words';
+import { useSensors, useSensorsHealth } from '@/lib/client/sensors';
+import { daysWords } from './Health';
+import { cellWords, gravityWords, heardWords, limitWords, linkWords, sensorState, temperatureWords } from './words';
+
+type SensorHealth = SensorHealthList['items'][number];
 
 const COLUMNS = 'strip:grid strip:grid-cols-[8.5rem_minmax(8rem,1.3fr)_minmax(8rem,1.4fr)_6.5rem_8.5rem_4.5rem_8.5rem_5rem] strip:items-center strip:gap-x-4';
 
@@ -24,8 +29,11 @@ function Cell({ name, children, right = false }: { name: string; children: React
   );
 }
 
-function Row({ sensor, now, timeZone }: { sensor: SensorBody; now: number; timeZone: string }) {
-  const { state, word } = sensorState(sensor, now);
+function Row({ sensor, health, limits, now, timeZone }: { sensor: SensorBody; health: SensorHealth | undefined; limits: SensorLimits | undefined; now: number; timeZone: string }) {
+  const findings = health?.findings.filter((finding) => finding.of !== 'silence') ?? [];
+  const { state, word } = sensorState(sensor, now, findings);
+  const found = (of: SensorHealth['findings'][number]['of']) => (findings.some((finding) => finding.of === of) ? 'font-semibold text-ochre' : undefined);
+  const days = daysWords(health?.battery_days ?? null);
   return (
     <li className="relative border-b border-rule px-(--margin) py-3 hover:bg-lit strip:py-0">
       <div className={`${COLUMNS} strip:min-h-[52px]`}>
@@ -62,13 +70,23 @@ function Row({ sensor, now, timeZone }: { sensor: SensorBody; now: number; timeZ
               '–'
             )}
           </Cell>
-          <Cell name="cell">{cellWords(sensor.last?.battery)}</Cell>
-          <Cell name="link">{linkWords(sensor.last?.signal)}</Cell>
+          <Cell name="cell">
+            <span className={found('battery')}>{cellWords(sensor.last?.battery)}</span>
+            {days && <span className="text-ink2 max-strip:before:content-[',_'] strip:block">{days}</span>}
+          </Cell>
+          <Cell name="link">
+            <span className={found('signal')}>{linkWords(sensor.last?.signal, limits?.weak_signal_dbm)}</span>
+          </Cell>
           <Cell name="refused" right>
             <span className={sensor.refused_24h > 0 ? 'font-semibold text-ochre' : 'text-ink2'}>{sensor.refused_24h}</span>
           </Cell>
         </dl>
       </div>
+      {findings.length > 0 && (
+        <p className="type-reason pt-1 text-ink2 strip:pb-2 strip:pl-[9.5rem]">
+          <Sentence>{findings.map((finding) => finding.says).join(' ')}</Sentence>
+        </p>
+      )}
     </li>
   );
 }
@@ -76,8 +94,11 @@ function Row({ sensor, now, timeZone }: { sensor: SensorBody; now: number; timeZ
 const URGENT = ['Silent', 'Check'];
 
 /** What wants a look first, then by name, figures in it as numbers. */
-function inOrder(sensors: readonly SensorBody[], now: number): SensorBody[] {
-  const rank = (sensor: SensorBody) => (URGENT.includes(sensorState(sensor, now).state) ? URGENT.indexOf(sensorState(sensor, now).state) : URGENT.length);
+function inOrder(sensors: readonly SensorBody[], healthOf: ReadonlyMap<string, SensorHealth>, now: number): SensorBody[] {
+  const rank = (sensor: SensorBody) => {
+    const at = URGENT.indexOf(sensorState(sensor, now, healthOf.get(sensor.id)?.findings).state);
+    return at < 0 ? URGENT.length : at;
+  };
   return [...sensors].sort((a, b) => rank(a) - rank(b) || a.name.localeCompare(b.name, 'en', { numeric: true }));
 }
 
@@ -85,6 +106,8 @@ function inOrder(sensors: readonly SensorBody[], now: number): SensorBody[] {
 export function SensorList() {
   const { me, may } = useMe();
   const { sensors, error, loading, retry } = useSensors({ limit: 200 });
+  const { data: health } = useSensorsHealth();
+  const healthOf = useMemo(() => new Map(health?.items.map((item) => [item.sensor, item])), [health]);
   const nowMs = useNow();
   const timeZone = me?.cellar.time_zone ?? 'UTC';
   const now = (nowMs ?? 0) / 1000;
@@ -127,10 +150,20 @@ export function SensorList() {
             <span className="text-right">refused</span>
           </div>
           <ul>
-            {inOrder(sensors, now).map((sensor) => (
-              <Row key={sensor.id} sensor={sensor} now={now} timeZone={timeZone} />
+            {inOrder(sensors, healthOf, now).map((sensor) => (
+              <Row key={sensor.id} sensor={sensor} health={healthOf.get(sensor.id)} limits={health?.limits} now={now} timeZone={timeZone} />
             ))}
           </ul>
+          {health && (
+            <p className="type-reason border-b px-(--margin) py-2 text-ink2">
+              This list says so when <Sentence>{limitWords(health.limits)}</Sentence>{' '}
+              {may('sensors.manage') && (
+                <Link href="/settings/sensors" className="underline underline-offset-2">
+                  Change the limits
+                </Link>
+              )}
+            </p>
+          )}
         </>
       )}
     </>

@@ -9,7 +9,7 @@ import { GroupBar, PageHead } from '@/components/ui/Page';
 import { State } from '@/components/ui/StateMark';
 import type { CreatedSensorBody, SensorBody } from '@/lib/contracts/sensors';
 import { useMe } from '@/lib/client/me';
-import { useSensor } from '@/lib/client/sensors';
+import { useSensor, useSensorHealth } from '@/lib/client/sensors';
 import { Calibration } from './Calibration';
 import { ConnectLines, type Doors } from './ConnectLines';
 import { Credential } from './Credential';
@@ -53,6 +53,7 @@ function OnOff({ sensor }: { sensor: SensorBody }) {
 export function SensorPage({ id, doors }: { id: string; doors: Doors }) {
   const { me, may } = useMe();
   const { sensor, error, loading, retry } = useSensor(id);
+  const { data: health } = useSensorHealth(id);
   const [renewed, setRenewed] = useState<{ sensor: CreatedSensorBody; at: number } | null>(null);
   const nowMs = useNow();
   const now = (nowMs ?? 0) / 1000;
@@ -77,7 +78,7 @@ export function SensorPage({ id, doors }: { id: string; doors: Doors }) {
     );
   }
   if (renewed) return <SecretShown sensor={renewed.sensor} doors={doors} since={renewed.at} onDone={() => setRenewed(null)} />;
-  const { state, word } = sensorState(sensor, now);
+  const { state, word } = sensorState(sensor, now, health?.findings);
   return (
     <>
       <PageHead

@@ -7,6 +7,7 @@ import { Button, LinkButton } from '@/components/ui/Button';
 import { usePageLayout } from '@/components/ui/layout';
 import { useNow } from '@/components/ui/now';
 import { GroupBar } from '@/components/ui/Page';
+import { Sentence } from '@/components/ui/Sentence';
 import { StateMark } from '@/components/ui/StateMark';
 import { useAlerts } from '@/lib/client/alerts';
 import { useMe } from '@/lib/client/me';
@@ -48,7 +49,8 @@ export function Shelf() {
   const live = useLiveState();
   const kept = useKeptSince();
   const timeZone = me?.cellar.time_zone ?? 'UTC';
-  const { shelf, error, loading, retry } = useShelf(now === null ? null : askedSpan(now));
+  const [skip, setSkip] = useState(0);
+  const { shelf, error, loading, retry } = useShelf(now === null ? null : { ...askedSpan(now), ...(skip > 0 && { skip }) });
   useKeepingAhead(shelf?.items);
   const mayTake = may('alerts.acknowledge');
   const [maySee, mayWalk, mayDo] = [may('alerts.read'), may('jobs.read'), may('jobs.do')];
@@ -129,7 +131,18 @@ export function Shelf() {
             </section>
           );
         })}
-        {views.length === 0 && (
+        {shelf.total > shelf.items.length && (
+          <Rest
+            skip={skip}
+            shown={shelf.items.length}
+            total={shelf.total}
+            onSkip={(to) => {
+              setSkip(to);
+              window.scrollTo({ top: 0 });
+            }}
+          />
+        )}
+        {views.length === 0 && shelf.total === 0 && (
           <ul>
             <EmptyLane may={may} />
           </ul>
@@ -145,6 +158,20 @@ export function Shelf() {
           </LinkButton>
         )}
       </div>
+    </div>
+  );
+}
+
+/** A shelf longer than one answer: what is shown of it, and the way to the rest. */
+function Rest({ skip, shown, total, onSkip }: { skip: number; shown: number; total: number; onSkip: (skip: number) => void }) {
+  const left = total - skip - shown;
+  return (
+    <div className="flex flex-wrap items-center gap-3 border-b bg-desk px-(--margin) py-2">
+      <p className="type-body mr-auto">
+        <Sentence>{`Shown are ${skip + 1} to ${skip + shown} of ${total} vessels, those with an alert first.`}</Sentence>
+      </p>
+      {skip > 0 && <Button onClick={() => onSkip(0)}>Back to the first</Button>}
+      {left > 0 && <Button onClick={() => onSkip(skip + shown)}>{left === 1 ? 'Show the last one' : `Show the next ${Math.min(left, shown)}`}</Button>}
     </div>
   );
 }

@@ -44,8 +44,18 @@ interface BatchFilter {
   workingSince?: Date;
   after?: { at: string; key: string } | null;
   limit: number;
+  /** Of the shelf: so many of those that stand first are left out. */
+  skip?: number;
   /** The picture of the last judgement too. */
   withCurve?: boolean;
+}
+
+const ON_SHELF = `(b.state = 'working' or b.ended_at >= $workingSince)`;
+
+/** How many stand on the shelf: at work, or ended since then. */
+export async function countShelf(cellarId: string, workingSince: Date): Promise<number> {
+  const [row] = await database().query<{ n: number }>(`select count(*)::int as n from batches b where b.cellar_id = $cellarId and ${ON_SHELF}`, { bind: { cellarId, workingSince }, type: QueryTypes.SELECT });
+  return row?.n ?? 0;
 }
 
 /** Batches of one cellar, newest first, with sensor, last judgement and open alerts, in one statement. The page is cut first: what hangs on a batch is looked up for those that are shown. */
@@ -53,7 +63,9 @@ export function findBatches(filter: BatchFilter, transaction?: Transaction): Pro
   const conditions = ['b.cellar_id = $cellarId'];
   if (filter.id !== undefined) conditions.push('b.id = $id');
   if (filter.state !== undefined) conditions.push('b.state = $state');
-  if (filter.workingSince !== undefined) conditions.push(`(b.state = 'working' or b.ended_at >= $workingSince)`);
+  if (filter.workingSince !== undefined) conditions.push(ON_SHELF);
+  // On the shelf what wants a person stands first, wherever it is cut.
+  const order = filter.workingSince === undefined ? '' : `exists (select 1 from alerts x where x.batch_id = b.id and x.state <> 'resolved') desc, b.state = 'working' desc, `;
   if (filter.after) conditions.push('(b.created_at, b.id) < ($afterAt::timestamptz, $afterKey::uuid)');
   return database().query<BatchRow>(
     `select b.id, b.name, b.kind, b.drink_colour as "drinkColour", b.vessel_kind as "vesselKind", b.tag, b.place,
@@ -63,7 +75,7 @@ export function findBatches(filter: BatchFilter, transaction?: Transaction): Pro
        b.state, b.ended_at as "endedAt", b.created_at as "createdAt", b.created_at::text as "createdAtText",
        case when mv.id is not null then json_build_object('id', mv.must_id, 'versionId', mv.id, 'name', mv.body->>'name', 'version', mv.version) end as must,
        s.sensor, st.assessment, ${filter.withCurve ? 'st.curve, st.expected' : 'null as curve, null as expected'}, coalesce(ov.overruled, '[]') as overruled, coalesce(al.alerts, '[]') as alerts
-     from (select b.* from batches b where ${conditions.join(' and ')} order by b.created_at desc, b.id desc limit $limit) b
+     from (select b.* from batches b where ${conditions.join(' and ')} order by ${order}b.created_at desc, b.id desc limit $limit offset $skip) b
      left join batch_states st on st.batch_id = b.id
      left join must_versions mv on mv.id = b.must_version_id
      left join lateral (
@@ -85,11 +97,12 @@ export function findBatches(filter: BatchFilter, transaction?: Transaction): Pro
        ) o left join people p on p.id = o.person_id
        where o.said->>'verdict' = st.assessment->'calls'->o.call->>'verdict' and o.said->>'kind' is not distinct from st.assessment->'calls'->o.call->>'kind'
      ) ov on true
-     order by b.created_at desc, b.id desc`,
+     order by ${order}b.created_at desc, b.id desc`,
     {
       bind: {
         cellarId: filter.cellarId,
         limit: filter.limit,
+        skip: filter.skip ?? 0,
         ...(filter.id !== undefined && { id: filter.id }),
         ...(filter.state !== undefined && { state: filter.state }),
         ...(filter.workingSince !== undefined && { workingSince: filter.workingSince }),

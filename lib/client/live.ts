@@ -36,7 +36,7 @@ export function touches(change: Pick<Change, 'kind' | 'batch'>): (path: string) 
     case 'alert':
       return (path) => isPath('/alerts')(path) || shelf(path) || isPath('/batches')(path) || (change.batch ? isPath(`/batches/${change.batch}`)(path) : false);
     case 'sensor':
-      return (path) => path.startsWith('/sensors') || shelf(path) || batch(path);
+      return (path) => path.startsWith('/sensors') || isPath('/sensor-health')(path) || shelf(path) || batch(path);
     case 'must':
       return (path) => path.startsWith('/musts') || path.startsWith('/catalogue');
     case 'job':

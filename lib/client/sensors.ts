@@ -2,7 +2,7 @@
 
 import type { z } from 'zod';
 import type { SurroundingsBody } from '../contracts/surroundings';
-import type { CreatedSensorBody, createSensor as createSensorSchema, rawReadingList, refusedList, SensorBody, SensorHealthBody, SensorLimits, sensorList, stayList, UpdateSensor } from '../contracts/sensors';
+import type { CreatedSensorBody, createSensor as createSensorSchema, rawReadingList, refusedList, SensorBody, SensorHealthBody, SensorHealthList, SensorLimits, sensorList, stayList, UpdateSensor } from '../contracts/sensors';
 import { sendJson, withQuery } from './fetcher';
 import { isPath, refresh, useResource } from './use-resource';
 
@@ -37,6 +37,8 @@ export async function updateSensor(id: string, input: UpdateSensor): Promise<Sen
 }
 
 export const useSensorHealth = (id: string) => useResource<SensorHealthBody>(`/sensors/${id}/health`);
+/** Of all of them; asked again by the minute, since days and gaps move slowly. */
+export const useSensorsHealth = () => useResource<SensorHealthList>('/sensor-health', { refreshInterval: 60_000 });
 export const useStays = (id: string) => useResource<z.infer<typeof stayList>>(`/sensors/${id}/stays`);
 export const useRawReadings = (id: string, limit: number, everyMs = 0) => useResource<z.infer<typeof rawReadingList>>(withQuery(`/sensors/${id}/readings`, { limit }), { refreshInterval: everyMs });
 /** What the probes around a batch say; asked again by the minute, since they speak on their own. */

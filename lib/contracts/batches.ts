@@ -282,6 +282,7 @@ export const laneSchema = batchSchema.extend({
   entries: z.array(entrySchema.pick({ id: true, kind: true, at: true, gravity: true, neck: true, text: true })),
 });
 export type LaneBody = z.infer<typeof laneSchema>;
-export const shelfQuery = z.object({ from: timestamp, to: timestamp });
-export const shelfSchema = z.object({ now: z.string(), items: z.array(laneSchema) });
+export const shelfQuery = z.object({ from: timestamp, to: timestamp, skip: z.coerce.number().int().min(0).max(100_000).default(0) });
+/** At most 500 lanes, those with an alert first, then those at work, newest first; `total` says how many there are. */
+export const shelfSchema = z.object({ now: z.string(), items: z.array(laneSchema), total: z.number().int() });
 export type ShelfBody = z.infer<typeof shelfSchema>;

@@ -3,7 +3,7 @@ import { calibrationForm, calibrationPointForm, calibrationPointSchema, calibrat
 import { id } from './common';
 import { byId, endpoint } from './endpoint';
 import { surroundingsSchema } from './surroundings';
-import { createdSensorSchema, rawReadingList, rawReadingQuery, sensorHealthSchema, sensorLimits, sensorSchema, sensorSettingsForm, stayList } from './sensors';
+import { createdSensorSchema, rawReadingList, rawReadingQuery, sensorHealthList, sensorHealthSchema, sensorLimits, sensorSchema, sensorSettingsForm, stayList } from './sensors';
 
 /** A sensor's identifier is not a UUID. */
 const bySensor = z.object({ id: z.string().regex(/^[a-z0-9-]{4,64}$/) });
@@ -18,6 +18,7 @@ export const endpointsSensors = {
   listStays: endpoint({ method: 'GET', path: '/sensors/{id}/stays', summary: 'Which batches a sensor was in, from when to when', access: 'sensors.read', params: bySensor, response: stayList, status: 200 }),
   listRawReadings: endpoint({ method: 'GET', path: '/sensors/{id}/readings', summary: 'A sensor’s latest readings as it sent them', access: 'sensors.read', params: bySensor, query: rawReadingQuery, response: rawReadingList, status: 200 }),
   getSurroundings: endpoint({ method: 'GET', path: '/batches/{id}/surroundings', summary: 'What room and foam probes beside a batch and in its place say', access: 'batches.read', params: byId, response: surroundingsSchema, status: 200 }),
+  listSensorHealth: endpoint({ method: 'GET', path: '/sensor-health', summary: 'What of the cellar’s sensors is not as it should be', access: 'sensors.read', response: sensorHealthList, status: 200 }),
   getSensorLimits: endpoint({ method: 'GET', path: '/sensor-limits', summary: 'When the cellar wants to be told of its sensors', access: 'sensors.read', response: sensorLimits, status: 200 }),
   setSensorLimits: endpoint({ method: 'PATCH', path: '/sensor-limits', summary: 'Change when the cellar wants to be told of its sensors', access: 'sensors.manage', body: sensorLimits.partial(), response: sensorLimits, status: 200 }),
 

@@ -106,3 +106,10 @@ export const sensorHealthSchema = z.object({
   limits: sensorLimits,
 });
 export type SensorHealthBody = z.infer<typeof sensorHealthSchema>;
+
+/** `GET /api/v1/sensor-health`: of every sensor what is not as the cellar wants it, and the limits that say so. */
+export const sensorHealthList = z.object({
+  items: z.array(z.object({ sensor: z.string(), battery_days: spread.nullable(), findings: sensorHealthSchema.shape.findings })),
+  limits: sensorLimits,
+});
+export type SensorHealthList = z.infer<typeof sensorHealthList>;

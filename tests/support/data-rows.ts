@@ -12,6 +12,7 @@ export const dataRows = {
   getSensorHealth: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/sensors/${t.floatId}/health` },
   listStays: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/sensors/${t.floatId}/stays` },
   listRawReadings: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/sensors/${t.floatId}/readings` },
+  listSensorHealth: { may: NOT_GUESTS, good: 200, path: () => '/sensor-health' },
   getSensorLimits: { may: NOT_GUESTS, good: 200, path: () => '/sensor-limits' },
   setSensorLimits: { may: ['keeper'], good: 200, path: () => '/sensor-limits', body: () => ({ low_battery_days: 7 }) },
   getCalibration: { may: NOT_GUESTS, good: 200, names: true, path: (t) => `/sensors/${t.floatId}/calibration` },

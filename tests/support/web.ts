@@ -1,12 +1,13 @@
 import { spawn } from 'node:child_process';
-import { mkdir, mkdtemp, readFile, rm, writeFile } from 'node:fs/promises';
+import { mkdtemp, readFile, rm } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join, resolve } from 'node:path';
 import { encode } from 'next-auth/jwt';
 import { SignIn } from '@/db/models';
 import { buildWeb } from '@/scripts/lib/build';
 import { freePort } from '@/scripts/lib/postgres';
-import { runs, until } from './processes';
+import { freeLock, takeLock } from './folder-lock';
+import { until } from './processes';
 
 const ROOT = resolve(import.meta.dirname, '../..');
 const DIST = '.next';
@@ -26,29 +27,17 @@ export interface Web {
   stop(): Promise<number>;
 }
 
-/** Takes a lock, a folder with its holder's pid in it; one that a dead process left is cleared for the next try. */
-async function take(lock: string): Promise<boolean> {
-  const holder = join(lock, 'pid');
-  if (await mkdir(lock).then(() => true, () => false)) {
-    await writeFile(holder, String(process.pid));
-    return true;
-  }
-  const pid = Number(await readFile(holder, 'utf8').catch(() => NaN));
-  if (pid > 0 && !runs(pid)) await rm(lock, { recursive: true, force: true });
-  return false;
-}
-
 /** Builds the web part once for all suites, unless the build there has the same sources. TEST_WEB_DIST names a build to take as it is. */
 async function built(): Promise<string> {
   const given = process.env.TEST_WEB_DIST;
   if (given) return given;
   const lock = join(ROOT, `${DIST}.lock`);
   // Two suites at once: the second waits for the first one's build, unless that one was ended in the midst of it.
-  await until('the other suite’s web build', () => take(lock), BUILD_PATIENCE_MS);
+  await until('the other suite’s web build', () => takeLock(lock), BUILD_PATIENCE_MS);
   try {
     await buildWeb(ROOT, DIST);
   } finally {
-    await rm(lock, { recursive: true, force: true });
+    await freeLock(lock);
   }
   return DIST;
 }

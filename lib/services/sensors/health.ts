@@ -1,10 +1,13 @@
+import { Op } from 'sequelize';
+import { Sensor } from '@/db/models';
 import { batchState } from '@/db/queries/batch-states';
 import { refusalGroups, sensorHealth } from '@/db/queries/sensor-health';
+import { findSensors } from '@/db/queries/sensors';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
 import type { AssessmentBody } from '@/lib/contracts/assessment';
-import type { SensorHealthBody } from '@/lib/contracts/sensors';
+import type { SensorBody, SensorHealthBody, SensorHealthList, SensorLimits } from '@/lib/contracts/sensors';
 import { batteryForecast } from '@/lib/core/health/battery';
 import { countGaps } from '@/lib/core/health/gaps';
 import { judgeHealth } from '@/lib/core/health/judge';
@@ -13,8 +16,11 @@ import { iso } from '../iso';
 import { getSensor } from './get';
 import { limitsOf } from './limits';
 import { loadSensor } from './place';
+import { presentSensor } from './present';
 
 const DAY_MS = 86_400_000;
+/** As many as the page of sensors shows. */
+const MOST_LISTED = 200;
 
 function byDay(cell: readonly { at: number; volts: number }[]): { at: string; volts: number }[] {
   const days = new Map<number, number[]>();
@@ -29,8 +35,30 @@ function byDay(cell: readonly { at: number; volts: number }[]): { at: string; vo
 export async function getSensorHealth(actor: Actor, identifier: string, clock: Clock = systemClock): Promise<SensorHealthBody> {
   authorize(actor, 'sensors.read');
   const now = clock.now();
-  const row = await loadSensor(actor.cellarId, identifier);
-  const [sensor, figures, refused, limits] = [await getSensor(actor, identifier), await sensorHealth(row.id, now), await refusalGroups(row.id, now), await limitsOf(actor.cellarId)];
+  const { id } = await loadSensor(actor.cellarId, identifier);
+  return healthOf(id, await getSensor(actor, identifier), await limitsOf(actor.cellarId), now);
+}
+
+/** The same of every sensor, in short. */
+export async function listSensorHealth(actor: Actor, clock: Clock = systemClock): Promise<SensorHealthList> {
+  authorize(actor, 'sensors.read');
+  const now = clock.now();
+  const limits = await limitsOf(actor.cellarId);
+  const rows = await Sensor.findAll({ attributes: ['id', 'identifier'], where: { cellarId: actor.cellarId, removedAt: null, kind: { [Op.ne]: 'file' } }, raw: true });
+  const ids = new Map(rows.map((row) => [row.identifier, row.id]));
+  const items: SensorHealthList['items'] = [];
+  for (const row of await findSensors({ cellarId: actor.cellarId, limit: MOST_LISTED })) {
+    const sensor = presentSensor(row);
+    const id = ids.get(sensor.id);
+    if (id === undefined || sensor.disabled) continue;
+    const { battery, findings } = await healthOf(id, sensor, limits, now);
+    items.push({ sensor: sensor.id, battery_days: battery?.days ?? null, findings });
+  }
+  return { items, limits };
+}
+
+async function healthOf(id: number, sensor: SensorBody, limits: SensorLimits, now: number): Promise<SensorHealthBody> {
+  const [figures, refused] = [await sensorHealth(id, now), await refusalGroups(id, now)];
   const state = sensor.batch && sensor.kind === 'float' ? await batchState<AssessmentBody>(sensor.batch.id) : null;
   const call = state?.assessment.calls.sensor ?? null;
 

@@ -1,5 +1,5 @@
 import type { z } from 'zod';
-import { findBatches, type BatchRow } from '@/db/queries/batches';
+import { countShelf, findBatches, type BatchRow } from '@/db/queries/batches';
 import { laneEntries, laneSeries, type LaneEntryRow, type LaneSeriesRow } from '@/db/queries/shelf';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
@@ -8,7 +8,7 @@ import type { LaneBody, ShelfBody, shelfQuery } from '@/lib/contracts/batches';
 import { InvalidError } from '@/lib/errors';
 import { presentBatch } from '../batches/present';
 
-/** More vessels than anybody has at work at once. */
+/** More vessels than anybody looks over at once; the rest comes after them. */
 const MOST_LANES = 500;
 /** A lane is some 700 pixels wide: more points than this are not seen. */
 const LANE_POINTS = 400;
@@ -24,7 +24,8 @@ export async function getShelf(actor: Actor, query: z.infer<typeof shelfQuery>, 
   if (to <= from) throw new InvalidError('The calendar ends before it begins.', { to: ['must be after `from`'] });
   if (to.getTime() - from.getTime() > LONGEST_DAYS * DAY_MS) throw new InvalidError('The calendar is too long.', { to: [`must be at most ${LONGEST_DAYS} days after \`from\``] });
 
-  const rows = await findBatches({ cellarId: actor.cellarId, workingSince: from, limit: MOST_LANES, withCurve: true });
+  const rows = await findBatches({ cellarId: actor.cellarId, workingSince: from, limit: MOST_LANES, skip: query.skip, withCurve: true });
+  const total = query.skip === 0 && rows.length < MOST_LANES ? rows.length : await countShelf(actor.cellarId, from);
   const ids = rows.map((row) => row.id);
   const span = { from: from.getTime() / 1000, to: to.getTime() / 1000 };
   // Readings fill the calendar only up to now.
@@ -35,6 +36,7 @@ export async function getShelf(actor: Actor, query: z.infer<typeof shelfQuery>, 
   for (const entry of entries) entriesOf.get(entry.batchId)?.push(entry);
   return {
     now: new Date(clock.now()).toISOString(),
+    total,
     items: rows.map((row) => lane(row, actor, query, seriesOf.get(row.id), entriesOf.get(row.id) ?? [])),
   };
 }
