@@ -151,7 +151,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
   ].find(({ error }) => error !== undefined);
   const retryAll = () => [series.retry, retryJudgement, retryEntries].forEach((retry) => retry());
   const heard = batch.sensor?.last_heard_at ? Date.parse(batch.sensor.last_heard_at) / 1000 : null;
-  const day = dayOf(batch.pitched_at, now);
+  const day = dayOf(batch.pitched_at, now, timeZone);
 
   return (
     <>

@@ -45,7 +45,7 @@ function probeFacts(probes: readonly ProbeBody[]): Fact[] {
 export function factsOf(batch: BatchBody, last: LastReading | null, now: number, timeZone: string, probes: readonly ProbeBody[] = []): Fact[] {
   const { assessment: judged, original_gravity: og } = batch;
   const seconds = (iso: string) => Date.parse(iso) / 1000;
-  const day = dayOf(batch.pitched_at, now);
+  const day = dayOf(batch.pitched_at, now, timeZone);
   const bed = judged?.final_gravity ?? null;
   const fallen = judged?.attenuation_percent ?? null;
   const attenuable = og !== null && og > 1 && bed ? share(og - bed.value, og - 1) : null;

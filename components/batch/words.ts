@@ -1,3 +1,4 @@
+import { wallTime } from '@/components/charts/zone';
 import type { DrinkKind, Foam, Neck, Stage } from '@/lib/core/types';
 import type { BatchBody, CLARITIES, SUBSTANCES } from '@/lib/contracts/batches';
 import { litres } from './figures';
@@ -20,11 +21,15 @@ export function placeWords(batch: Pick<BatchBody, 'tag' | 'volume_l' | 'vessel_l
   return [batch.tag === null ? null : `tag ${batch.tag}`, `${volume} ${batch.vessel_kind}`, batch.place].filter((part) => part !== null).join(', ');
 }
 
-/** Day 1 is the day of the pitch. */
-export function dayOf(pitchedAt: string | null, nowS: number): number | null {
+/** Days on the wall calendar since the pitch: pitched yesterday evening is day 1. Null: not pitched, or not yet. `nowS` in seconds since 1970. */
+export function dayOf(pitchedAt: string | null, nowS: number, timeZone: string): number | null {
   if (pitchedAt === null) return null;
-  const days = (nowS - Date.parse(pitchedAt) / 1000) / 86_400;
-  return days < 0 ? null : Math.floor(days) + 1;
+  const midnight = (at: number) => {
+    const wall = wallTime(at, timeZone);
+    return Date.UTC(wall.year, wall.month - 1, wall.day);
+  };
+  const days = Math.round((midnight(nowS) - midnight(Date.parse(pitchedAt) / 1000)) / 86_400_000);
+  return days < 0 ? null : days;
 }
 
 export const CLARITY_WORDS: Record<(typeof CLARITIES)[number], string> = { cloudy: 'cloudy', hazy: 'hazy', clearing: 'clearing', bright: 'bright' };

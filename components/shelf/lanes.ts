@@ -1,3 +1,4 @@
+import { dayOf } from '@/components/batch/words';
 import { clock, dayName, MONTHS, wallTime, when } from '@/components/charts/zone';
 import { gravityText, volumeText } from '@/components/ui/units';
 import type { AlertBody } from '@/lib/contracts/alerts';
@@ -143,14 +144,10 @@ export function inOrder(views: readonly LaneView[]): LaneView[] {
   );
 }
 
-/** Days on the wall calendar since the pitch: pitched yesterday evening is day 1. */
-export function dayOf(pitchedAt: string | null, now: number, timeZone: string): string {
-  if (pitchedAt === null) return 'not pitched';
-  const noon = (at: number) => {
-    const wall = wallTime(at, timeZone);
-    return Date.UTC(wall.year, wall.month - 1, wall.day);
-  };
-  return `day ${Math.max(0, Math.round((noon(now) - noon(Date.parse(pitchedAt) / 1000)) / 86_400_000))}`;
+/** `day 6`, `not pitched` */
+export function dayWords(pitchedAt: string | null, now: number, timeZone: string): string {
+  const day = dayOf(pitchedAt, now, timeZone);
+  return day === null ? 'not pitched' : `day ${day}`;
 }
 
 export const litres = (volume: number) => volumeText(volume, 1);

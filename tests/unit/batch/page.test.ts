@@ -36,8 +36,11 @@ describe('the line of facts', () => {
 });
 
 describe('a batch in words', () => {
-  it('counts the day of the pitch as day 1, and none before it', () => {
-    expect([dayOf(hours(0), NOW), dayOf(hours(-23.9), NOW), dayOf(hours(-24), NOW), dayOf(hours(2), NOW), dayOf(null, NOW)]).toEqual([1, 1, 2, null, null]);
+  it('counts days as the wall calendar does, and none before the pitch', () => {
+    const now = Date.parse('2026-10-15T14:31Z') / 1000;
+    expect([dayOf('2026-10-15T00:10Z', now, 'UTC'), dayOf('2026-10-14T23:50Z', now, 'UTC'), dayOf('2026-10-09T15:00Z', now, 'UTC'), dayOf('2026-10-16T00:10Z', now, 'UTC'), dayOf(null, now, 'UTC')]).toEqual([0, 1, 6, null, null]);
+    // Over the change of clocks in late October a day has 25 hours.
+    expect(dayOf('2026-10-20T12:00Z', Date.parse('2026-10-30T09:00Z') / 1000, 'Europe/Vienna')).toBe(10);
   });
 
   it('names the volume once where the vessel is full', () => {
