@@ -1,6 +1,6 @@
 'use client';
 
-import { useEffect, useMemo, useState } from 'react';
+import { useMemo, useState } from 'react';
 import { pictureOf } from '@/components/charts/from-wire';
 import { wholeSpan, type Span } from '@/components/charts/picture';
 import { isWhole, within } from '@/components/charts/zoom';
@@ -10,6 +10,7 @@ import { MuteBar } from '@/components/messages/BatchMute';
 import { Haze } from '@/components/ui/Haze';
 import { usePageLayout } from '@/components/ui/layout';
 import { ErrorState } from '@/components/ui/Notice';
+import { useSettled } from '@/components/ui/use-settled';
 import { useNow } from '@/components/ui/now';
 import { EmptyVessel } from '@/components/vessel/Vessel';
 import { vesselOf } from '@/components/vessel/describe';
@@ -39,18 +40,6 @@ import { dayOf, STAGE_WORDS } from './words';
 
 /** Points asked for: about one for every two pixels of the chart. */
 const POINTS = 400;
-/** A pinch asks for its readings once it rests. */
-const SETTLE_MS = 250;
-
-function useSettled<T>(value: T): T {
-  const [settled, setSettled] = useState(value);
-  useEffect(() => {
-    const timer = setTimeout(() => setSettled(value), SETTLE_MS);
-    return () => clearTimeout(timer);
-  }, [value]);
-  return settled;
-}
-
 function Loading() {
   return (
     <div className="px-(--margin) py-4" aria-busy="true">

@@ -1,7 +1,10 @@
 import { describe, expect, it } from 'vitest';
 import { Job } from '@/db/models';
 import { lotQuery, openBottles as openForm } from '@/lib/contracts/lots';
+import { updateCellar as updateCellarForm } from '@/lib/contracts/people';
 import { ConflictError, ForbiddenError, InvalidError, NotFoundError } from '@/lib/errors';
+import { updateCellar } from '@/lib/services/cellars/own';
+import { getMe } from '@/lib/services/people/get-me';
 import { bottleBatch } from '@/lib/services/bench/bottle';
 import { cell, exportLots } from '@/lib/services/lots/export';
 import { getLot } from '@/lib/services/lots/get';
@@ -185,6 +188,26 @@ describe('the cellar book', () => {
     expect(first.items).toHaveLength(2);
     expect(await names({ sort: 'name', order: 'asc', limit: 2, cursor: first.next_cursor })).toEqual(['Bramble mead']);
     await expect(listLots(brewer, lotQuery.parse({ cursor: 'nonsense' }), clock)).rejects.toBeInstanceOf(InvalidError);
+  });
+
+  it('counts its cost in what the cellar counts in, also where it is exported; figures alone where nobody told', async () => {
+    const brewer = await buildMember('brewer');
+    const keeper = await buildMember('keeper', { cellarId: brewer.cellarId });
+    await bottled(brewer, { other_cost: 3.5 });
+    const columns = async () => {
+      const [head, line] = (await exportLots(brewer, lotQuery.parse({}), clock)).trimEnd().split('\r\n');
+      return Object.fromEntries(head!.split(',').map((name, index) => [name, line!.split(',')[index]]));
+    };
+    expect(await columns()).toMatchObject({ currency: '', cost_known: 'no' });
+    await updateCellar(keeper, { currency: 'DKK' });
+    expect((await getMe(brewer)).cellar.currency).toBe('DKK');
+    expect(await columns()).toMatchObject({ currency: 'DKK' });
+    await updateCellar(keeper, { name: 'Renamed' });
+    expect((await getMe(brewer)).cellar).toMatchObject({ name: 'Renamed', currency: 'DKK' });
+    await updateCellar(keeper, { currency: null });
+    expect((await getMe(brewer)).cellar.currency).toBeNull();
+    expect(updateCellarForm.safeParse({ currency: 'XQQ' }).success).toBe(false);
+    await expect(updateCellar(brewer, { currency: 'EUR' })).rejects.toThrow();
   });
 
   it('is exported so that no spreadsheet takes a name for a formula', async () => {
