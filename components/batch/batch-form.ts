@@ -5,6 +5,7 @@ import type { DrinkKind, Neck } from '@/lib/core/types';
 import { fromLocal, toLocal } from './entry-form';
 import { typedGravity, typedNumber } from './figures';
 import { USUAL } from './kinds';
+import { sentencesOf } from '@/lib/contracts/issues';
 
 type VesselKind = BatchBody['vessel_kind'];
 
@@ -154,16 +155,10 @@ function wireOf(draft: BatchDraft, timeZone: string): NewBatch {
   };
 }
 
-function told(issues: readonly { path: PropertyKey[]; message: string }[]): BatchErrors {
-  const fields: Record<string, string[]> = {};
-  for (const issue of issues) (fields[issue.path.join('.')] ??= []).push(issue.message);
-  return batchErrors(fields);
-}
-
 export function batchToCreate(draft: BatchDraft, timeZone: string): { batch: NewBatch; errors: null } | { batch: null; errors: BatchErrors } {
   const batch = wireOf(draft, timeZone);
   const checked = createBatch.safeParse(batch);
-  return checked.success ? { batch, errors: null } : { batch: null, errors: told(checked.error.issues) };
+  return checked.success ? { batch, errors: null } : { batch: null, errors: batchErrors(sentencesOf(checked.error.issues)) };
 }
 
 /** Only what differs from the batch as it was, so that two people changing different things do not undo each other. */
@@ -171,7 +166,7 @@ export function batchToUpdate(draft: BatchDraft, before: BatchBody, timeZone: st
   const { sensor: _sensor, ...now } = wireOf(draft, timeZone);
   const { sensor: _before, ...was } = wireOf(draftOf(before, timeZone), timeZone);
   const whole = updateBatch.safeParse(now);
-  if (!whole.success) return { change: null, errors: told(whole.error.issues) };
+  if (!whole.success) return { change: null, errors: batchErrors(sentencesOf(whole.error.issues)) };
   const changed = (Object.keys(now) as (keyof typeof now)[]).filter((field) => now[field] !== was[field]);
   return { change: Object.fromEntries(changed.map((field) => [field, now[field]])), errors: null };
 }

@@ -3,6 +3,7 @@ import type { Foam, Neck } from '@/lib/core/types';
 import type { NewEntry } from '@/lib/client/entries';
 import { instantOf, wallTime } from '@/components/charts/zone';
 import { typedGravity, typedNumber } from './figures';
+import { sentencesOf } from '@/lib/contracts/issues';
 
 export type EntryKind = (typeof LOGGED_KINDS)[number];
 export type Substance = (typeof SUBSTANCES)[number];
@@ -164,12 +165,6 @@ export function errorsOf(fields: Record<string, readonly string[]>): DraftErrors
   return Object.fromEntries(Object.entries(fields).flatMap(([path, said]) => (WIRE[path] && said[0] ? [[WIRE[path], said[0]]] : [])));
 }
 
-function told(issues: readonly { path: PropertyKey[]; message: string }[]): DraftErrors {
-  const fields: Record<string, string[]> = {};
-  for (const issue of issues) (fields[issue.path.join('.')] ??= []).push(issue.message);
-  return errorsOf(fields);
-}
-
 /** What was looked at, measured or weighed; null where nothing was. */
 function detailOf(draft: EntryDraft, asked: (field: EntryField) => boolean): EntryDetail | null {
   const words = (field: 'smell' | 'taste' | 'name') => (asked(field) && draft[field].trim() !== '' ? draft[field] : null);
@@ -231,7 +226,7 @@ export function entryOf(draft: EntryDraft, timeZone: string, clientId: string): 
   // A refractometer's reading is asked for at its own field.
   if (draft.kind === 'reading' && draft.instrument === 'refractometer' && typeof wire.detail?.brix !== 'number') return { entry: null, errors: { brix: 'is needed for a reading' } };
   const checked = createEntry.safeParse({ ...wire, kind: draft.kind, client_id: clientId });
-  return checked.success ? { entry: checked.data, errors: null } : { entry: null, errors: told(checked.error.issues) };
+  return checked.success ? { entry: checked.data, errors: null } : { entry: null, errors: errorsOf(sentencesOf(checked.error.issues)) };
 }
 
 /** Only what differs from the entry as it was; null where nothing does. What the form does not show of it stays. */
@@ -248,7 +243,7 @@ export function correctionOf(draft: EntryDraft, before: EntryBody, timeZone: str
   const change: Record<string, unknown> = Object.fromEntries(changed.map((field) => [field, now[field]]));
   if (changed.includes('detail')) change.detail = merged(before.detail, then.detail, now.detail);
   const checked = updateEntry.safeParse(change);
-  return checked.success ? { change: checked.data, errors: null } : { change: null, errors: told(checked.error.issues) };
+  return checked.success ? { change: checked.data, errors: null } : { change: null, errors: errorsOf(sentencesOf(checked.error.issues)) };
 }
 
 /** The kept detail with the form's part of it replaced. */

@@ -3,6 +3,7 @@ import { benchForm, doneOf, type BenchFacts, type BenchForm, type PrimingForm, t
 import type { BenchRequest, Priming } from '@/lib/core/bottling/bench';
 import { BOTTLES, type BottleKind, type Closure } from '@/lib/core/bottling/bottles';
 import { primingSugar, syrup, USUAL_DROP_G, usualDrops } from '@/lib/core/bottling/priming';
+import { sentencesOf, firstOf } from '@/lib/contracts/issues';
 
 export type SugarWay = 'none' | 'weighed' | 'syrup' | 'drops';
 export type WeighedSugar = Exclude<(typeof WEIGHED_SUGARS)[number], 'syrup'>;
@@ -92,7 +93,7 @@ export function formOf(draft: BenchDraft, facts: BenchFacts): { form: BenchForm;
     warmest_since_end_c: orNull(draft.warmestSinceEnd),
     priming: primingOf(draft),
   });
-  if (!parsed.success) return { form: null, errors: Object.fromEntries(parsed.error.issues.toReversed().map((issue) => [issue.path.join('.'), issue.message])) };
+  if (!parsed.success) return { form: null, errors: firstOf(sentencesOf(parsed.error.issues)) };
   const form = parsed.data;
   const { vessel_l } = facts.batch;
   const volume = form.volume_l ?? facts.batch.volume_l;

@@ -6,7 +6,7 @@ import { Choice } from '@/components/ui/Choice';
 import { Select } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
 import { GroupBar } from '@/components/ui/Page';
-import { useWork } from '@/components/sensors/use-work';
+import { useAct } from '@/components/ui/use-act';
 import { ARCHIVE_LIMIT_BYTES, IMPORT_LIMIT_BYTES, type ImportPreviewBody } from '@/lib/contracts/imports';
 import { useBatches } from '@/lib/client/batches';
 import { keepFile, lookAtFile } from '@/lib/client/imports';
@@ -43,11 +43,11 @@ export function ImportFile() {
   const [looked, setLooked] = useState<Looked | null>(null);
   const [batch, setBatch] = useState('');
   const [done, setDone] = useState<string | null>(null);
-  const { busy, failed, fields, run } = useWork('The file was not read. Try again.');
+  const { busy, failed, fields, act } = useAct('The file was not read. Try again.');
   const input = useRef<HTMLInputElement>(null);
 
   const look = (file: Looked['file'], chosen: Chosen | null, as = kind) =>
-    run(async () => {
+    act(async () => {
       // The server's schema checks the whole of it; the union is told apart by its kind.
       setLooked({ file, preview: await lookAtFile(formOf(as, file, chosen) as Parameters<typeof lookAtFile>[0]) });
     });
@@ -57,7 +57,7 @@ export function ImportFile() {
     if (!file) return;
     setDone(null);
     setLooked(null);
-    await run(async () => {
+    await act(async () => {
       const limit = kind === 'archive' ? ARCHIVE_LIMIT_BYTES : IMPORT_LIMIT_BYTES;
       if (file.size > limit) throw new ClientError(413, 'too-large', `${file.name} is larger than ${limit / 1e6} MB. ${kind === 'archive' ? 'Take it out batch by batch, or use a backup.' : 'Cut it in parts.'}`);
       const given = { file_name: file.name.slice(0, 120), text: await file.text() };
@@ -69,7 +69,7 @@ export function ImportFile() {
   async function keep() {
     if (!looked) return;
     const form = { ...formOf(kind, looked.file, choicesOf(looked.preview)), ...(kind === 'readings' && { batch_id: batch }) };
-    await run(async () => {
+    await act(async () => {
       const kept = await keepFile(form as Parameters<typeof keepFile>[0]);
       setDone(`Kept: ${countWords(kept.counts)}.`);
       setLooked(null);
@@ -80,7 +80,7 @@ export function ImportFile() {
     <section aria-label="Bring in">
       <GroupBar word="Bring in" note="nothing is kept until you say so" />
       <div className="flex flex-col gap-3 border-b bg-desk px-(--margin) py-4">
-        {failed && <FormError>{fields.text?.[0] ? `The file ${fields.text[0]}.` : failed}</FormError>}
+        {failed && <FormError>{fields.text ? `The file ${fields.text[0]}.` : failed}</FormError>}
         <Choice
           label="what it holds"
           value={kind}
@@ -106,7 +106,7 @@ export function ImportFile() {
           <Preview preview={looked.preview} onChoose={(chosen) => void look(looked.file, chosen)} />
           <div className="flex flex-wrap items-end gap-3 border-b bg-desk px-(--margin) py-4">
             {kind === 'readings' && (
-              <Select label="into" value={batch} onChange={(event) => setBatch(event.target.value)} error={fields.batch_id?.[0]} className="min-w-56">
+              <Select label="into" value={batch} onChange={(event) => setBatch(event.target.value)} error={fields.batch_id} className="min-w-56">
                 <option value="">choose a batch</option>
                 {(batches ?? []).map((item) => (
                   <option key={item.id} value={item.id}>

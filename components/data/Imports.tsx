@@ -2,7 +2,7 @@
 
 import { useState } from 'react';
 import { dayName } from '@/components/charts/zone';
-import { useWork } from '@/components/sensors/use-work';
+import { useAct } from '@/components/ui/use-act';
 import { Button } from '@/components/ui/Button';
 import { FormError } from '@/components/ui/Notice';
 import { GroupBar } from '@/components/ui/Page';
@@ -14,7 +14,7 @@ import { countWords } from './words';
 export function Imports() {
   const { me } = useMe();
   const { imports } = useImports();
-  const { busy, failed, run } = useWork('It was not taken out. Try again.');
+  const { busy, failed, act } = useAct('It was not taken out. Try again.');
   const [sure, setSure] = useState<string | null>(null);
   const day = (at: string) => dayName(Date.parse(at) / 1000, me?.cellar.time_zone ?? 'UTC');
   if (!imports || imports.length === 0) return null;
@@ -39,7 +39,7 @@ export function Imports() {
             {!item.undone_at &&
               (sure === item.id ? (
                 <span className="flex gap-2">
-                  <Button size="lane" look="final" disabled={busy} onClick={() => void run(() => undoImport(item.id)).then(() => setSure(null))}>
+                  <Button size="lane" look="final" disabled={busy} onClick={() => void act(() => undoImport(item.id)).then(() => setSure(null))}>
                     Take all of it out
                   </Button>
                   <Button size="lane" onClick={() => setSure(null)}>

@@ -20,6 +20,7 @@ import { NECKS } from '@/lib/core/types';
 import { Comes } from './Comes';
 import { poured } from './poured';
 import { SulphiteHint } from './SulphiteHint';
+import { sentencesOf } from '@/lib/contracts/issues';
 
 type What = '' | 'water' | 'must' | 'drink' | 'batch';
 
@@ -85,11 +86,7 @@ export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rac
       ...(draft.neck === '' ? {} : { neck: NECKS.find((neck) => neck === draft.neck) }),
     };
     const form = rack ? rackForm.safeParse({ ...base, left_l: number(draft.left) ?? NaN, vessel, top_up: topUp ? [topUp] : [], sulphite_g: number(draft.sulphite) }) : topUpBatchForm.safeParse({ ...base, top_up: topUp });
-    if (!form.success) {
-      const fields: Record<string, string[]> = {};
-      for (const issue of form.error.issues) (fields[issue.path.join('.')] ??= []).push(issue.message);
-      return tell(fields);
-    }
+    if (!form.success) return tell(sentencesOf(form.error.issues));
     setSending(true);
     try {
       setMoved('left_l' in form.data ? await rackBatch(batch.id, form.data) : await topUpBatch(batch.id, form.data));

@@ -17,7 +17,7 @@ import { Candidates } from './Candidates';
 import { KeepFit } from './KeepFit';
 import { OwnOffset, Suggested } from './OffsetPanel';
 import { PointForm } from './PointForm';
-import { useWork } from './use-work';
+import { useAct } from '@/components/ui/use-act';
 import { Versions } from './Versions';
 
 /** Half widths above this ask for more points, SG: two points, as far as a hydrometer can be read. */
@@ -56,7 +56,7 @@ function Bench({ sensor, calibration, mayChange, timeZone, now }: { sensor: Sens
   const degree = chosen ?? (calibration.points.length >= 4 ? 2 : 1);
   const [corrects, setCorrects] = useState(true);
   const [left, setLeft] = useState<ReadonlySet<string>>(new Set());
-  const { failed, run } = useWork();
+  const { failed, act } = useAct();
   const points: ChosenPoint[] = calibration.points.map((point) => ({ ...point, used: !left.has(point.id) }));
   const used = points.filter((point) => point.used);
   // The core itself, in the browser: what is seen here is what is kept.
@@ -86,7 +86,7 @@ function Bench({ sensor, calibration, mayChange, timeZone, now }: { sensor: Sens
           <Verdict outcome={outcome} />
         )}
       </div>
-      {points.length > 0 && <CalibrationPoints points={points} fit={outcome.ok ? outcome.fit : null} mayChange={mayChange} onUse={use} onRemove={(id) => void run(() => removePoint(sensor.id, id))} />}
+      {points.length > 0 && <CalibrationPoints points={points} fit={outcome.ok ? outcome.fit : null} mayChange={mayChange} onUse={use} onRemove={(id) => void act(() => removePoint(sensor.id, id))} />}
       {mayChange && (
         <>
           <KeepFit sensor={sensor.id} points={used.map((point) => point.id)} outcome={outcome} degree={degree} onDegree={setDegree} corrects={corrects} onCorrects={setCorrects} calibration={calibration} timeZone={timeZone} now={now} />

@@ -7,11 +7,11 @@ import { GroupBar } from '@/components/ui/Page';
 import { gravityText } from '@/components/ui/units';
 import type { CalibrationBody } from '@/lib/contracts/calibration';
 import { pairPoint } from '@/lib/client/calibration';
-import { useWork } from './use-work';
+import { useAct } from '@/components/ui/use-act';
 
 /** Hydrometer readings of the log with what the float leaned like then. */
 export function Candidates({ sensor, candidates, timeZone }: { sensor: string; candidates: CalibrationBody['candidates']; timeZone: string }) {
-  const { busy, failed, run } = useWork('The reading was not taken. Try again.');
+  const { busy, failed, act } = useAct('The reading was not taken. Try again.');
   if (candidates.length === 0) return null;
   return (
     <>
@@ -25,7 +25,7 @@ export function Candidates({ sensor, candidates, timeZone }: { sensor: string; c
                 {dayName(Date.parse(candidate.at) / 1000, timeZone)}, {candidate.batch}
               </span>
             </span>
-            <Button size="lane" disabled={busy} onClick={() => void run(() => pairPoint(sensor, candidate.entry_id))}>
+            <Button size="lane" disabled={busy} onClick={() => void act(() => pairPoint(sensor, candidate.entry_id))}>
               Take it
             </Button>
           </li>

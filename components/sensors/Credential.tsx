@@ -6,13 +6,13 @@ import { Button } from '@/components/ui/Button';
 import { FormError } from '@/components/ui/Notice';
 import type { CreatedSensorBody, SensorBody } from '@/lib/contracts/sensors';
 import { removeSensor, rotateSensor } from '@/lib/client/sensors';
-import { useWork } from './use-work';
+import { useAct } from '@/components/ui/use-act';
 
 /** A new secret, or the end of it: each asked twice. */
 export function Credential({ sensor, onNewSecret }: { sensor: SensorBody; onNewSecret: (sensor: CreatedSensorBody) => void }) {
   const router = useRouter();
   const [asked, setAsked] = useState<'secret' | 'remove' | null>(null);
-  const { busy, failed, run } = useWork();
+  const { busy, failed, act } = useAct();
   return (
     <div className="flex flex-col items-start gap-3 border-b px-(--margin) py-4">
       {failed && <FormError>{failed}</FormError>}
@@ -28,7 +28,7 @@ export function Credential({ sensor, onNewSecret }: { sensor: SensorBody; onNewS
         <>
           <p className="type-body">The old secret ends at once: until the new one is in the sensor, it is refused.</p>
           <div className="flex flex-wrap gap-2">
-            <Button look="final" disabled={busy} onClick={() => void run(async () => onNewSecret(await rotateSensor(sensor.id)))}>
+            <Button look="final" disabled={busy} onClick={() => void act(async () => onNewSecret(await rotateSensor(sensor.id)))}>
               Make a new secret
             </Button>
             <Button onClick={() => setAsked(null)}>Leave it</Button>
@@ -39,7 +39,7 @@ export function Credential({ sensor, onNewSecret }: { sensor: SensorBody; onNewS
         <>
           <p className="type-body">It is refused from now on and leaves the list. What it measured stays with the batches it was in.</p>
           <div className="flex flex-wrap gap-2">
-            <Button look="final" disabled={busy} onClick={() => void run(() => removeSensor(sensor.id)).then((done) => done && router.push('/sensors'))}>
+            <Button look="final" disabled={busy} onClick={() => void act(() => removeSensor(sensor.id)).then((done) => done && router.push('/sensors'))}>
               Remove {sensor.name}
             </Button>
             <Button onClick={() => setAsked(null)}>Leave it</Button>

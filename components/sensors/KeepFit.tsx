@@ -10,7 +10,7 @@ import type { CalibrationBody } from '@/lib/contracts/calibration';
 import { keepCalibration } from '@/lib/client/calibration';
 import { DEGREES, type Degree, type FitOutcome } from '@/lib/core/calibration/calibrate';
 import { fromLocalInput, toLocalInput } from './numbers';
-import { useWork } from './use-work';
+import { useAct } from '@/components/ui/use-act';
 
 interface KeepProps {
   sensor: string;
@@ -31,16 +31,16 @@ const NAMES: Record<Degree, string> = { 1: 'Straight', 2: 'Bent', 3: 'Bent twice
 export function KeepFit({ sensor, points, outcome, degree, onDegree, corrects, onCorrects, calibration, timeZone, now }: KeepProps) {
   const [from, setFrom] = useState<string | null>(null);
   const [kept, setKept] = useState<number | null>(null);
-  const { busy, failed, fields, run, setFields } = useWork('The calibration was not kept. Try again.');
+  const { busy, failed, fields, act, setFields } = useAct('The calibration was not kept. Try again.');
   // What waits is what most people want turned.
   const usual = calibration.waiting_since ? Math.floor(Date.parse(calibration.waiting_since) / 60_000) * 60_000 : now * 1000;
   const shown = from ?? (now > 0 ? toLocalInput(usual, timeZone) : '');
 
   async function keep() {
     const appliesFrom = fromLocalInput(shown, timeZone);
-    if (!appliesFrom) return setFields({ applies_from: ['is a day and a time'] });
+    if (!appliesFrom) return setFields({ applies_from: 'is a day and a time' });
     setKept(null);
-    await run(async () => setKept((await keepCalibration(sensor, { degree, corrects_temperature: corrects, points, applies_from: appliesFrom })).version));
+    await act(async () => setKept((await keepCalibration(sensor, { degree, corrects_temperature: corrects, points, applies_from: appliesFrom })).version));
   }
 
   return (
@@ -48,7 +48,7 @@ export function KeepFit({ sensor, points, outcome, degree, onDegree, corrects, o
       {failed && <FormError>{failed}</FormError>}
       <div className="flex flex-wrap items-end gap-x-4 gap-y-3">
         <Choice label="curve" value={String(degree) as '1' | '2' | '3'} onChoose={(value) => onDegree(Number(value) as Degree)} options={DEGREES.map((value) => ({ value: String(value) as '1' | '2' | '3', name: NAMES[value] }))} className="min-w-[280px]" />
-        <Field label="applies from" type="datetime-local" value={shown} onChange={(event) => setFrom(event.target.value)} error={fields.applies_from?.[0]} className="w-56" />
+        <Field label="applies from" type="datetime-local" value={shown} onChange={(event) => setFrom(event.target.value)} error={fields.applies_from} className="w-56" />
       </div>
       <Box ticked={corrects} onTick={onCorrects}>
         <span className="type-body">Take out how the liquid swells with warmth, by the temperature of each reading.</span>

@@ -10,7 +10,8 @@ import { sensorLimits, type SensorLimits } from '@/lib/contracts/sensors';
 import { useMe } from '@/lib/client/me';
 import { setSensorLimits, useSensorLimits } from '@/lib/client/sensors';
 import { readNumber } from './numbers';
-import { useWork } from './use-work';
+import { useAct } from '@/components/ui/use-act';
+import { sentencesOf, firstOf } from '@/lib/contracts/issues';
 
 const FIELDS: readonly { name: keyof SensorLimits; label: string; unit: string; hint: string }[] = [
   { name: 'low_battery_days', label: 'cell may be flat within', unit: 'days', hint: 'by the low end of the forecast' },
@@ -23,20 +24,20 @@ const FIELDS: readonly { name: keyof SensorLimits; label: string; unit: string; 
 function Form({ limits, mayChange }: { limits: SensorLimits; mayChange: boolean }) {
   const [values, setValues] = useState(() => Object.fromEntries(FIELDS.map(({ name }) => [name, String(limits[name])])) as Record<keyof SensorLimits, string>);
   const [kept, setKept] = useState(false);
-  const { busy, failed, fields, run, setFields } = useWork('The limits were not kept. Try again.');
+  const { busy, failed, fields, act, setFields } = useAct('The limits were not kept. Try again.');
   async function submit(event: FormEvent) {
     event.preventDefault();
     setKept(false);
     const parsed = sensorLimits.safeParse(Object.fromEntries(FIELDS.map(({ name }) => [name, readNumber(values[name])])));
-    if (!parsed.success) return setFields(Object.fromEntries(parsed.error.issues.map((issue) => [issue.path.join('.'), [issue.message]])));
-    setKept(await run(() => setSensorLimits(parsed.data)));
+    if (!parsed.success) return setFields(firstOf(sentencesOf(parsed.error.issues)));
+    setKept(await act(() => setSensorLimits(parsed.data)));
   }
   return (
     <form noValidate onSubmit={(event) => void submit(event)} className="flex flex-col gap-4 border-b bg-desk px-(--margin) py-4">
       {failed && <FormError>{failed}</FormError>}
       <div className="flex flex-wrap items-start gap-3">
         {FIELDS.map(({ name, label, unit, hint }) => (
-          <Field key={name} label={label} unit={unit} hint={hint} inputMode="text" held={!mayChange} value={values[name]} onChange={(event) => setValues((before) => ({ ...before, [name]: event.target.value }))} error={fields[name]?.[0]} className="w-56" />
+          <Field key={name} label={label} unit={unit} hint={hint} inputMode="text" held={!mayChange} value={values[name]} onChange={(event) => setValues((before) => ({ ...before, [name]: event.target.value }))} error={fields[name]} className="w-56" />
         ))}
       </div>
       {mayChange && (

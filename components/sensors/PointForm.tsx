@@ -10,7 +10,8 @@ import { UnitField } from '@/components/units/UnitField';
 import { calibrationPointForm, type CalibrationBody } from '@/lib/contracts/calibration';
 import { addPoint } from '@/lib/client/calibration';
 import { readNumber } from './numbers';
-import { useWork } from './use-work';
+import { useAct } from '@/components/ui/use-act';
+import { sentencesOf, firstOf } from '@/lib/contracts/issues';
 
 type Way = 'water' | 'sugar' | 'hydrometer';
 const WAYS: readonly { value: Way; name: string }[] = [
@@ -28,7 +29,7 @@ const HINTS: Record<Way, string> = {
 export function PointForm({ sensor, last }: { sensor: string; last: CalibrationBody['last'] }) {
   const [way, setWay] = useState<Way>('sugar');
   const [values, setValues] = useState({ inclination: '', gravity: '', sugar: '', temperature: '20' });
-  const { busy, failed, fields, run, setFields } = useWork('The point was not noted. Try again.');
+  const { busy, failed, fields, act, setFields } = useAct('The point was not noted. Try again.');
   const set = (name: keyof typeof values) => (event: { target: { value: string } }) => setValues((before) => ({ ...before, [name]: event.target.value }));
 
   async function submit(event: FormEvent) {
@@ -40,13 +41,8 @@ export function PointForm({ sensor, last }: { sensor: string; last: CalibrationB
       gravity: way === 'hydrometer' ? readNumber(values.gravity) : null,
       sugar_g_per_l: way === 'sugar' ? readNumber(values.sugar) : null,
     });
-    if (!parsed.success) {
-      const errors: Record<string, string[]> = {};
-      for (const issue of parsed.error.issues) (errors[issue.path.join('.')] ??= []).push(issue.message);
-      setFields(errors);
-      return;
-    }
-    if (await run(() => addPoint(sensor, parsed.data))) setValues((before) => ({ ...before, inclination: '', gravity: '', sugar: '' }));
+    if (!parsed.success) return setFields(firstOf(sentencesOf(parsed.error.issues)));
+    if (await act(() => addPoint(sensor, parsed.data))) setValues((before) => ({ ...before, inclination: '', gravity: '', sugar: '' }));
   }
 
   return (
@@ -57,10 +53,10 @@ export function PointForm({ sensor, last }: { sensor: string; last: CalibrationB
         <Sentence>{HINTS[way]}</Sentence>
       </p>
       <div className="flex flex-wrap items-start gap-3">
-        {way === 'sugar' && <Field label="sugar in a litre" inputMode="decimal" unit="g/L" value={values.sugar} onChange={set('sugar')} error={fields.sugar_g_per_l?.[0] ?? fields.gravity?.[0]} className="w-40" />}
-        {way === 'hydrometer' && <UnitField measure="gravity" label={<Sentence>gravity at 20 °C</Sentence>} value={values.gravity} onChange={set('gravity')} error={fields.gravity?.[0]} className="w-40" />}
-        <Field label="it leans" inputMode="decimal" unit="°" value={values.inclination} onChange={set('inclination')} error={fields.inclination?.[0]} className="w-36" />
-        <UnitField measure="temperature" label="the liquid is" value={values.temperature} onChange={set('temperature')} error={fields.temperature?.[0]} className="w-32" />
+        {way === 'sugar' && <Field label="sugar in a litre" inputMode="decimal" unit="g/L" value={values.sugar} onChange={set('sugar')} error={fields.sugar_g_per_l ?? fields.gravity} className="w-40" />}
+        {way === 'hydrometer' && <UnitField measure="gravity" label={<Sentence>gravity at 20 °C</Sentence>} value={values.gravity} onChange={set('gravity')} error={fields.gravity} className="w-40" />}
+        <Field label="it leans" inputMode="decimal" unit="°" value={values.inclination} onChange={set('inclination')} error={fields.inclination} className="w-36" />
+        <UnitField measure="temperature" label="the liquid is" value={values.temperature} onChange={set('temperature')} error={fields.temperature} className="w-32" />
       </div>
       <div className="flex flex-wrap items-center gap-2">
         <Button type="submit" disabled={busy}>

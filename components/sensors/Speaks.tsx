@@ -9,13 +9,13 @@ import { State } from '@/components/ui/StateMark';
 import type { SensorBody } from '@/lib/contracts/sensors';
 import { setSensor } from '@/lib/client/sensors';
 import { IntervalOptions } from './Intervals';
-import { useWork } from './use-work';
+import { useAct } from '@/components/ui/use-act';
 import { everyWords } from './words';
 
 /** How often it is to speak, sent down to it; it confirms by itself with its next word. */
 export function Speaks({ sensor, now, timeZone }: { sensor: SensorBody; now: number; timeZone: string }) {
   const [chosen, setChosen] = useState(String(sensor.settings?.interval_s ?? sensor.interval_s));
-  const { busy, failed, run } = useWork('The settings were not sent. Try again.');
+  const { busy, failed, act } = useAct('The settings were not sent. Try again.');
   const { settings } = sensor;
   const at = (time: string) => when(Date.parse(time) / 1000, now, timeZone);
   return (
@@ -25,7 +25,7 @@ export function Speaks({ sensor, now, timeZone }: { sensor: SensorBody; now: num
         <Select label="tell it to speak every" value={chosen} onChange={(event) => setChosen(event.target.value)} className="min-w-36 flex-1">
           <IntervalOptions given={Number(chosen)} />
         </Select>
-        <Button disabled={busy} onClick={() => void run(() => setSensor(sensor.id, Number(chosen)))}>
+        <Button disabled={busy} onClick={() => void act(() => setSensor(sensor.id, Number(chosen)))}>
           Send it down
         </Button>
       </div>

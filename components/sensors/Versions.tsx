@@ -7,7 +7,7 @@ import { FormError } from '@/components/ui/Notice';
 import { GroupBar } from '@/components/ui/Page';
 import type { CalibrationVersionBody } from '@/lib/contracts/calibration';
 import { takeBackCalibration } from '@/lib/client/calibration';
-import { useWork } from './use-work';
+import { useAct } from '@/components/ui/use-act';
 import { signedPoints } from './words';
 
 function whatItIs(version: CalibrationVersionBody): string {
@@ -19,7 +19,7 @@ function whatItIs(version: CalibrationVersionBody): string {
 
 /** Every calibration there was, newest first; one that is taken back stays readable. */
 export function Versions({ sensor, versions, mayChange, timeZone }: { sensor: string; versions: readonly CalibrationVersionBody[]; mayChange: boolean; timeZone: string }) {
-  const { busy, failed, run } = useWork('It was not taken back. Try again.');
+  const { busy, failed, act } = useAct('It was not taken back. Try again.');
   const [sure, setSure] = useState<number | null>(null);
   if (versions.length === 0) return null;
   const day = (at: string) => dayName(Date.parse(at) / 1000, timeZone);
@@ -46,7 +46,7 @@ export function Versions({ sensor, versions, mayChange, timeZone }: { sensor: st
               !version.removed_at &&
               (sure === version.version ? (
                 <span className="flex gap-2">
-                  <Button size="lane" look="final" disabled={busy} onClick={() => void run(() => takeBackCalibration(sensor, version.version)).then(() => setSure(null))}>
+                  <Button size="lane" look="final" disabled={busy} onClick={() => void act(() => takeBackCalibration(sensor, version.version)).then(() => setSure(null))}>
                     Take it back
                   </Button>
                   <Button size="lane" onClick={() => setSure(null)}>

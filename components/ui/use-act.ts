@@ -2,9 +2,10 @@
 
 import { useState } from 'react';
 import { ClientError } from '@/lib/client/fetcher';
+import { firstOf } from '@/lib/contracts/issues';
 
-/** One thing asked of the server at a time: whether it is under way, and what was wrong with it. What was typed stays. */
-export function useAct() {
+/** One thing asked of the server at a time: whether it is under way, and what was wrong with it. What was typed stays. `otherwise`: said where the server did not say why. */
+export function useAct(otherwise = 'It was not done. Nothing was changed; try again.') {
   const [busy, setBusy] = useState(false);
   const [failed, setFailed] = useState<string | null>(null);
   const [fields, setFields] = useState<Record<string, string>>({});
@@ -19,14 +20,13 @@ export function useAct() {
       return true;
     } catch (error) {
       const told = error instanceof ClientError ? error : null;
-      const wrong = Object.fromEntries(Object.entries(told?.fields ?? {}).flatMap(([name, sentences]) => (sentences[0] ? [[name, sentences[0]]] : [])));
-      setFields(wrong);
-      setFailed(told?.message ?? 'It was not done. Nothing was changed; try again.');
+      setFields(firstOf(told?.fields ?? {}));
+      setFailed(told?.message ?? otherwise);
       return false;
     } finally {
       setBusy(false);
     }
   }
 
-  return { busy, failed, fields, act, clear: () => (setFailed(null), setFields({})) };
+  return { busy, failed, fields, act, setFields, clear: () => (setFailed(null), setFields({})) };
 }

@@ -2,7 +2,7 @@
 
 import { useState } from 'react';
 import { when } from '@/components/charts/zone';
-import { useWork } from '@/components/sensors/use-work';
+import { useAct } from '@/components/ui/use-act';
 import { Button } from '@/components/ui/Button';
 import { FormError } from '@/components/ui/Notice';
 import { useNow } from '@/components/ui/now';
@@ -26,7 +26,7 @@ function useAt(): (time: string) => string {
 
 function Deliveries({ id }: { id: string }) {
   const { deliveries } = useDeliveries(id);
-  const { busy, run } = useWork();
+  const { busy, act } = useAct();
   const at = useAt();
   if (!deliveries) return null;
   if (deliveries.length === 0) return <p className="type-reason py-2 text-ink2">Nothing was owed yet.</p>;
@@ -46,7 +46,7 @@ function Deliveries({ id }: { id: string }) {
             {delivery.next_attempt_at && delivery.attempts > 0 && `, again ${at(delivery.next_attempt_at)}`}
           </span>
           {delivery.state !== 'delivered' && (
-            <Button size="lane" look="quiet" disabled={busy} onClick={() => void run(() => deliverAgain(id, delivery.id))}>
+            <Button size="lane" look="quiet" disabled={busy} onClick={() => void act(() => deliverAgain(id, delivery.id))}>
               Send now
             </Button>
           )}
@@ -60,7 +60,7 @@ function Deliveries({ id }: { id: string }) {
 export function WebhookRow({ webhook }: { webhook: WebhookBody }) {
   const [open, setOpen] = useState(false);
   const [sure, setSure] = useState(false);
-  const { busy, failed, run } = useWork();
+  const { busy, failed, act } = useAct();
   const at = useAt();
   return (
     <li className="border-b px-(--margin) py-3">
@@ -81,15 +81,15 @@ export function WebhookRow({ webhook }: { webhook: WebhookBody }) {
         <Button size="lane" aria-expanded={open} onClick={() => setOpen(!open)}>
           {open ? 'Put the log away' : 'Log'}
         </Button>
-        <Button size="lane" disabled={busy || webhook.disabled} onClick={() => void run(() => tryWebhook(webhook.id)).then((sent) => sent && setOpen(true))}>
+        <Button size="lane" disabled={busy || webhook.disabled} onClick={() => void act(() => tryWebhook(webhook.id)).then((sent) => sent && setOpen(true))}>
           Try it
         </Button>
-        <Button size="lane" disabled={busy} onClick={() => void run(() => updateWebhook(webhook.id, { disabled: !webhook.disabled }))}>
+        <Button size="lane" disabled={busy} onClick={() => void act(() => updateWebhook(webhook.id, { disabled: !webhook.disabled }))}>
           {webhook.disabled ? 'Switch it on' : 'Switch it off'}
         </Button>
         {sure ? (
           <>
-            <Button size="lane" look="final" disabled={busy} onClick={() => void run(() => removeWebhook(webhook.id))}>
+            <Button size="lane" look="final" disabled={busy} onClick={() => void act(() => removeWebhook(webhook.id))}>
               Remove it with its log
             </Button>
             <Button size="lane" onClick={() => setSure(false)}>

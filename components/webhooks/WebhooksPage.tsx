@@ -2,7 +2,7 @@
 
 import { useState, type FormEvent } from 'react';
 import { CopyLine } from '@/components/sensors/ConnectLines';
-import { useWork } from '@/components/sensors/use-work';
+import { useAct } from '@/components/ui/use-act';
 import { Box } from '@/components/ui/Box';
 import { Button } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
@@ -26,10 +26,10 @@ export const EVENT_WORDS: Record<WebhookEvent, string> = {
 function NewWebhook({ onMade }: { onMade: (made: CreatedWebhookBody) => void }) {
   const [url, setUrl] = useState('');
   const [events, setEvents] = useState<readonly WebhookEvent[]>(['alert']);
-  const { busy, failed, fields, run } = useWork('The webhook was not made. Try again.');
+  const { busy, failed, fields, act } = useAct('The webhook was not made. Try again.');
   const submit = (event: FormEvent) => {
     event.preventDefault();
-    void run(async () => {
+    void act(async () => {
       onMade(await createWebhook({ url: url.trim(), events: [...events] }));
       setUrl('');
     });
@@ -37,7 +37,7 @@ function NewWebhook({ onMade }: { onMade: (made: CreatedWebhookBody) => void }) 
   return (
     <form noValidate onSubmit={submit} className="flex flex-col gap-3 border-b bg-desk px-(--margin) py-4">
       {failed && <FormError>{failed}</FormError>}
-      <Field label="address" type="url" inputMode="url" value={url} onChange={(event) => setUrl(event.target.value)} error={fields.url?.[0]} hint="https, of the open Internet" autoComplete="off" className="max-w-[560px]" />
+      <Field label="address" type="url" inputMode="url" value={url} onChange={(event) => setUrl(event.target.value)} error={fields.url} hint="https, of the open Internet" autoComplete="off" className="max-w-[560px]" />
       <fieldset className="flex flex-col gap-2">
         <legend className="type-label mb-1 text-ink2">tell it when</legend>
         {WEBHOOK_EVENTS.map((event) => (
@@ -45,7 +45,7 @@ function NewWebhook({ onMade }: { onMade: (made: CreatedWebhookBody) => void }) 
             <span className="type-body">{EVENT_WORDS[event]}</span>
           </Box>
         ))}
-        {fields.events?.[0] && <p className="type-label text-madder">{fields.events[0]}</p>}
+        {fields.events && <p className="type-label text-madder">{fields.events}</p>}
       </fieldset>
       <div>
         <Button type="submit" look="first" disabled={busy}>

@@ -3,6 +3,7 @@
 import { useState } from 'react';
 import type { z } from 'zod';
 import { ClientError } from './fetcher';
+import { sentencesOf } from '../contracts/issues';
 
 /** First sentence of what is wrong, by the contract's own path: `parts.0.volume_l`. */
 export type PathErrors = Readonly<Record<string, string>>;
@@ -30,11 +31,7 @@ export function useSend<S extends z.ZodType, A>(schema: S, send: (form: z.output
     setErrors({});
     setFailed(null);
     const form = schema.safeParse(input);
-    if (!form.success) {
-      const fields: Record<string, string[]> = {};
-      for (const issue of form.error.issues) (fields[issue.path.join('.')] ??= []).push(issue.message);
-      return tell(fields);
-    }
+    if (!form.success) return tell(sentencesOf(form.error.issues));
     setSending(true);
     try {
       setAnswer(await send(form.data));

@@ -13,6 +13,7 @@ import { metrics } from './metrics';
 import { problemOf } from './problem';
 import { requireSameSite } from './same-site';
 import { countWrongToken } from './wrong-tokens';
+import { sentencesOf } from '@/lib/contracts/issues';
 
 type Parsed<S> = S extends z.ZodType ? z.output<S> : undefined;
 /** Where there is no schema: nothing, or a file that the route made itself. */
@@ -130,11 +131,7 @@ function parse(schema: z.ZodType | undefined, value: unknown, message: string): 
   return parsed.data;
 }
 
-export function fieldErrors(error: z.ZodError): FieldErrors {
-  const fields: FieldErrors = {};
-  for (const issue of error.issues) (fields[issue.path.join('.') || 'body'] ??= []).push(issue.message);
-  return fields;
-}
+export const fieldErrors = (error: z.ZodError): FieldErrors => sentencesOf(error.issues, 'body');
 
 /** Answers "not now" where the database stalls. `reads`: nothing was to be changed. */
 export async function inTime(work: Promise<Response>, reads = false, deadlineMs = DEADLINE_MS): Promise<Response> {

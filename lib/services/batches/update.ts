@@ -12,6 +12,7 @@ import { notAhead } from '../not-ahead';
 import { takeOut } from '../sensors/place';
 import { getBatch } from './get';
 import { loadBatch } from './load';
+import { sentencesOf } from '@/lib/contracts/issues';
 
 /** Field of the form to column. */
 const COLUMNS = {
@@ -44,9 +45,7 @@ function checkWhole(batch: Batch): void {
   const whole = Object.fromEntries(Object.entries(COLUMNS).map(([field, column]) => [field, batch[column]]));
   const checked = batchForm.safeParse(whole);
   if (checked.success) return;
-  const fields: Record<string, string[]> = {};
-  for (const issue of checked.error.issues) (fields[issue.path.join('.')] ??= []).push(issue.message);
-  throw new InvalidError('Some values do not fit together.', fields);
+  throw new InvalidError('Some values do not fit together.', sentencesOf(checked.error.issues));
 }
 
 /** Changes a batch, ends it (its sensor comes out) or opens it again. A change of neck or pitch is logged as such. */
