@@ -10,11 +10,13 @@
  *
  *   (Kr/D) ln(S/(D + δS)) + ln(D + δS)/δ = −k A(τ),  D = 1 − δ,  A = ∫a dτ
  *
- * by Newton's method in ln S. Parameters, in this order: OG and FG in points,
+ * by Halley's method in ln S (each step cubes the error). Parameters, in this order: OG and FG in points,
  * ln κ, ln m, ln Kr, logit δ, where κ = k/(1 + Kr) is the pace of a full must a
  * day: unlike k it hardly hangs together with Kr.
  */
 export const KINETIC_PARAMETERS = 6;
+/** A step in ln S after which what is left of the error, its cube, no longer counts. */
+const CLOSE = 1e-5;
 /** Steps in which the steepest place is sought. */
 const PEAK_STEPS = 60;
 
@@ -30,8 +32,13 @@ export class KineticCurve {
   readonly delta: number;
   private readonly w: number;
   private readonly base: number;
-  /** Last solution, ln S: the next τ is usually a little later. */
+  /** ∂/∂ln m of w·base, over m. */
+  private readonly baseByM: number;
+  /** Last solution, ln S, with its k A and its slope: the next τ is usually a little later. */
   private x = 0;
+  private gone = 0;
+  private slope: number;
+  private peak: { until: number; at: number } | null = null;
 
   constructor(parameters: ArrayLike<number>) {
     this.og = parameters[0]!;
@@ -41,31 +48,39 @@ export class KineticCurve {
     this.k = Math.exp(parameters[2]!) * (1 + this.kr);
     this.delta = logistic(parameters[5]!);
     this.w = 0.18 * this.m + 0.02;
-    this.base = softplus(-this.m / this.w);
-  }
-
-  /** A(τ), days. */
-  private activity(tau: number): number {
-    return this.w * (softplus((tau - this.m) / this.w) - this.base);
+    const z0 = -this.m / this.w;
+    this.base = softplus(z0);
+    this.baseByM = logistic(z0) * (1 + 0.18 * z0);
+    this.slope = 1 / (this.kr + 1);
   }
 
   /** ln S at τ. */
-  private solve(tau: number): number {
-    if (tau <= 0) return 0;
+  solve(tau: number): number {
+    return tau <= 0 ? 0 : this.after(softplus((tau - this.m) / this.w) - this.base);
+  }
+
+  /** ln S once A has come to `rise` · w. */
+  private after(rise: number): number {
     const { kr, delta } = this;
     const d = 1 - delta;
-    const gone = this.k * this.activity(tau);
-    let x = this.x;
+    const gone = this.k * this.w * rise;
+    let x = Math.max(this.x - 3, Math.min(0, this.x - (gone - this.gone) * this.slope));
+    let slope = this.slope;
     for (let i = 0; i < 60; i += 1) {
       const s = Math.exp(x);
       const e = d + delta * s;
       const l = Math.log1p(-delta * (1 - s));
       const f = (kr / d) * (x - l) + l / delta + gone;
-      const step = f / ((kr + s) / e);
+      slope = e / (kr + s);
+      const newton = f * slope;
+      // f''/(2f') by x is s(D − δKr)/(2e(Kr + s)).
+      const step = newton / Math.max(0.5, 1 - (newton * s * (d - delta * kr)) / (2 * e * (kr + s)));
       const next = x - Math.max(-3, Math.min(3, step));
       x = next > 0 ? 0 : next;
-      if (Math.abs(step) < 1e-9 || x < -60) break;
+      if (Math.abs(step) < CLOSE || x < -60) break;
     }
+    this.slope = slope;
+    this.gone = gone;
     this.x = Math.max(x, -60);
     return this.x;
   }
@@ -90,6 +105,7 @@ export class KineticCurve {
   /** τ at which the fall is steepest, days; to about a sixtieth of the span up to `tau` or well past the onset. */
   peakTau(tau: number): number {
     const until = Math.max(tau, 3 * this.m + 1);
+    if (this.peak?.until === until) return this.peak.at;
     let at = 0;
     let most = 0;
     for (let i = 1; i <= PEAK_STEPS; i += 1) {
@@ -100,6 +116,7 @@ export class KineticCurve {
         at = here;
       }
     }
+    this.peak = { until, at };
     return at;
   }
 
@@ -117,8 +134,8 @@ export class KineticCurve {
   }
 
   /** Gravity at τ; its derivatives by the six parameters go to out[at], out[at + stride], … */
-  gradient(tau: number, out: Float64Array, at: number, stride: number): number {
-    const x = this.solve(tau);
+  gradient(tau: number, out: Float64Array, at: number, stride: number, solved = this.solve(tau)): number {
+    const x = solved;
     const s = Math.exp(x);
     const { kr, delta, k, m, w } = this;
     const drop = this.og - this.fg;
@@ -132,9 +149,8 @@ export class KineticCurve {
     const e = d + delta * s;
     const l = Math.log1p(-delta * (1 - s));
     const z = (tau - m) / w;
-    const z0 = -m / w;
     const rise = softplus(z) - this.base;
-    const byM = 0.18 * rise - logistic(z) * (1 + 0.18 * z) + logistic(z0) * (1 + 0.18 * z0);
+    const byM = 0.18 * rise - logistic(z) * (1 + 0.18 * z) + this.baseByM;
     const byX = (kr + s) / e;
     const f = -(drop * s) / byX;
     const lByDelta = -(1 - s) / e;
@@ -144,5 +160,42 @@ export class KineticCurve {
     out[at + 4 * stride] = f * ((kr / d) * (x - l) + (k * w * rise * kr) / (1 + kr));
     out[at + 5 * stride] = f * byDelta * delta * d;
     return this.fg + drop * s;
+  }
+}
+
+/**
+ * The curve over one row of ages, as a solver asks for it: first its values at some
+ * parameters, then mostly their derivatives at the same, for which it is solved already.
+ */
+export class KineticRow {
+  private readonly solved: Float64Array;
+  private readonly parameters = new Float64Array(KINETIC_PARAMETERS);
+  private curve: KineticCurve | null = null;
+
+  constructor(
+    private readonly tau: ArrayLike<number>,
+    private readonly n: number,
+  ) {
+    this.solved = new Float64Array(n);
+  }
+
+  private at(parameters: Float64Array): KineticCurve {
+    if (this.curve && parameters.every((value, j) => value === this.parameters[j])) return this.curve;
+    this.parameters.set(parameters);
+    this.curve = new KineticCurve(parameters);
+    for (let i = 0; i < this.n; i += 1) this.solved[i] = this.curve.solve(this.tau[i]!);
+    return this.curve;
+  }
+
+  /** Gravities, points, to out[0..n). */
+  gravities(parameters: Float64Array, out: Float64Array): void {
+    const { og, fg } = this.at(parameters);
+    for (let i = 0; i < this.n; i += 1) out[i] = fg + (og - fg) * Math.exp(this.solved[i]!);
+  }
+
+  /** Derivative of gravity i by parameter j, to out[j·stride + i]. */
+  gradients(parameters: Float64Array, out: Float64Array, stride: number): void {
+    const curve = this.at(parameters);
+    for (let i = 0; i < this.n; i += 1) curve.gradient(this.tau[i]!, out, i, stride, this.solved[i]!);
   }
 }

@@ -1,4 +1,4 @@
-import { KINETIC_PARAMETERS, KineticCurve } from './kinetic';
+import { KINETIC_PARAMETERS, KineticCurve, KineticRow } from './kinetic';
 import { leastSquares } from './leastsquares';
 import type { CurvePrior } from './priors';
 
@@ -47,18 +47,18 @@ export function fitCurve(data: Observations, prior: CurvePrior, start?: ArrayLik
       out[data.n + j] = j === 1 ? Math.sign(z) * Math.sqrt((T + 1) * Math.log1p((z * z) / T)) : z;
     }
   };
+  const row = new KineticRow(data.tau, data.n);
   const problem = {
     observations: m,
     parameters: p,
     residuals(at: Float64Array, out: Float64Array) {
-      const curve = new KineticCurve(at);
-      for (let i = 0; i < data.n; i += 1) out[i] = (curve.gravity(data.tau[i]!) - data.g[i]!) / data.sd[i]!;
+      row.gravities(at, out);
+      for (let i = 0; i < data.n; i += 1) out[i] = (out[i]! - data.g[i]!) / data.sd[i]!;
       pull(at, out);
     },
     jacobian(at: Float64Array, out: Float64Array) {
-      const curve = new KineticCurve(at);
+      row.gradients(at, out, m);
       for (let i = 0; i < data.n; i += 1) {
-        curve.gradient(data.tau[i]!, out, i, m);
         for (let j = 0; j < p; j += 1) out[j * m + i] = out[j * m + i]! / data.sd[i]!;
       }
       for (let j = 0; j < p; j += 1) {

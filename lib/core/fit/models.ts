@@ -1,4 +1,4 @@
-import { KINETIC_PARAMETERS, KineticCurve } from './kinetic';
+import { KINETIC_PARAMETERS, KineticCurve, KineticRow } from './kinetic';
 import { leastSquares, type FitOptions, type LeastSquaresFit, type Problem, type StopReason } from './leastsquares';
 
 /**
@@ -181,17 +181,15 @@ export function modelGradient(model: ModelName, parameters: ArrayLike<number>, d
 function problemOf(model: ModelName, t: Float64Array, g: Float64Array): Problem {
   const m = t.length;
   if (model === 'kinetic') {
+    const row = new KineticRow(t, m);
     return {
       observations: m,
       parameters: KINETIC_PARAMETERS,
       residuals(at, out) {
-        const curve = new KineticCurve(at);
-        for (let i = 0; i < m; i += 1) out[i] = curve.gravity(t[i]!) - g[i]!;
+        row.gravities(at, out);
+        for (let i = 0; i < m; i += 1) out[i] = out[i]! - g[i]!;
       },
-      jacobian(at, out) {
-        const curve = new KineticCurve(at);
-        for (let i = 0; i < m; i += 1) curve.gradient(t[i]!, out, i, m);
-      },
+      jacobian: (at, out) => row.gradients(at, out, m),
     };
   }
   const closed = CLOSED[model];
