@@ -67,7 +67,7 @@ export function medianInPlace(values: Float64Array, from: number, to: number): n
 
 /** Median of a list, which stays as it was; NaN of an empty one. */
 export function median(values: ArrayLike<number>): number {
-  const copy = Float64Array.from(values);
+  const copy = new Float64Array(values);
   return medianInPlace(copy, 0, copy.length);
 }
 

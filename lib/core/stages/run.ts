@@ -1,5 +1,6 @@
 import type { BatchEvent, BatchSetup, Instant, Reading } from '../types';
 import { accept } from '../series/bins';
+import { select } from '../series/order';
 import { LOOK_H, Watch } from './watch';
 
 /** Least lag between measuring and receiving that still counts as a wrong clock. */
@@ -13,12 +14,16 @@ const CLOCK_MS = 30 * 60_000;
  * and the times in it are right.
  */
 function clockErrorOf(known: readonly Reading[]): number {
-  const lags: number[] = [];
-  for (const reading of known) if (reading.receivedAt != null) lags.push(reading.receivedAt - reading.at);
-  if (lags.length < 12) return 0;
-  lags.sort((a, b) => a - b);
-  const quick = lags[Math.floor(0.05 * lags.length)]!;
-  if (lags[Math.floor(0.5 * lags.length)]! - quick > CLOCK_MS) return 0;
+  const lags = new Float64Array(known.length);
+  let n = 0;
+  for (const reading of known) {
+    if (reading.receivedAt == null) continue;
+    lags[n] = reading.receivedAt - reading.at;
+    n += 1;
+  }
+  if (n < 12) return 0;
+  const quick = select(lags, 0, n, Math.floor(0.05 * n));
+  if (select(lags, 0, n, Math.floor(0.5 * n)) - quick > CLOCK_MS) return 0;
   return Math.abs(quick) > CLOCK_MS ? Math.round(quick / 600_000) * 600_000 : 0;
 }
 
