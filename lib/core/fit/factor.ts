@@ -32,11 +32,19 @@ function cholesky(
   const n = free.length;
   for (let a = 0; a < n; a += 1) {
     const ca = free[a]! * m;
-    for (let b = a; b < n; b += 1) {
+    // Two columns at a time: a sum has to wait for itself, two of them need not wait for each other.
+    for (let b = a; b < n; b += 2) {
       const cb = free[b]! * m;
+      const cc = free[Math.min(b + 1, n - 1)]! * m;
       let sum = 0;
-      for (let i = 0; i < m; i += 1) sum += jacobian[ca + i]! * jacobian[cb + i]!;
+      let other = 0;
+      for (let i = 0; i < m; i += 1) {
+        const value = jacobian[ca + i]!;
+        sum += value * jacobian[cb + i]!;
+        other += value * jacobian[cc + i]!;
+      }
       triangle[a * n + b] = sum;
+      if (b + 1 < n) triangle[a * n + b + 1] = other;
     }
     let sum = 0;
     for (let i = 0; i < m; i += 1) sum += jacobian[ca + i]! * residuals[i]!;
@@ -77,7 +85,8 @@ function householder(
   for (let a = 0; a < n; a += 1) {
     const ca = a * m;
     let norm = 0;
-    for (let i = a; i < m; i += 1) norm = Math.hypot(norm, q[ca + i]!);
+    for (let i = a; i < m; i += 1) norm += q[ca + i]! ** 2;
+    norm = Math.sqrt(norm);
     if (a >= m || norm === 0) {
       triangle[a * n + a] = 0;
       projected[a] = 0;
@@ -106,10 +115,9 @@ function householder(
 
 /**
  * Upper triangle of RᵀR + D² and the right side that goes with it, by Givens
- * rotations (Moré 1978): no squaring. `triangle` and `rhs` are overwritten.
+ * rotations (Moré 1978): no squaring. `triangle`, `rhs` and `row` are overwritten.
  */
-export function damp(triangle: Float64Array, rhs: Float64Array, damping: Float64Array, n: number): void {
-  const row = new Float64Array(n);
+export function damp(triangle: Float64Array, rhs: Float64Array, damping: Float64Array, n: number, row: Float64Array): void {
   for (let j = 0; j < n; j += 1) {
     if (damping[j] === 0) continue;
     row.fill(0);
@@ -119,7 +127,7 @@ export function damp(triangle: Float64Array, rhs: Float64Array, damping: Float64
       const below = row[k]!;
       if (below === 0) continue;
       const pivot = triangle[k * n + k]!;
-      const length = Math.hypot(pivot, below);
+      const length = Math.sqrt(pivot * pivot + below * below);
       const cos = pivot / length;
       const sin = below / length;
       triangle[k * n + k] = length;

@@ -44,9 +44,9 @@ export interface LeastSquaresFit {
 
 const EPS = 2.220446049250313e-16;
 
-function sumSquares(values: Float64Array): number {
+function sumSquares(values: Float64Array, n = values.length): number {
   let sum = 0;
-  for (let i = 0; i < values.length; i += 1) sum += values[i]! * values[i]!;
+  for (let i = 0; i < n; i += 1) sum += values[i]! * values[i]!;
   return sum;
 }
 
@@ -74,12 +74,24 @@ function differences(problem: Problem, at: Float64Array, out: Float64Array, lowe
   }
 }
 
-interface Step {
-  damping: number;
-  step: Float64Array;
+/** Room for the step of n parameters, made once a fit. */
+class StepRoom {
+  readonly step: Float64Array;
+  readonly work: Float64Array;
+  readonly rhs: Float64Array;
+  readonly diagonal: Float64Array;
+  readonly damped: Float64Array;
+
+  constructor(n: number) {
+    this.step = new Float64Array(n);
+    this.work = new Float64Array(n);
+    this.rhs = new Float64Array(n);
+    this.diagonal = new Float64Array(n);
+    this.damped = new Float64Array(n * n);
+  }
 }
 
-/** Step of length about `radius` in the scaled parameters; Moré's iteration for the damping. */
+/** Leaves in `room.step` a step of length about `radius` in the scaled parameters; the damping it takes, by Moré's iteration. */
 function trustStep(
   triangle: Float64Array,
   projected: Float64Array,
@@ -87,20 +99,19 @@ function trustStep(
   radius: number,
   damping: number,
   n: number,
-): Step {
-  const step = new Float64Array(n);
-  const work = new Float64Array(n);
+  room: StepRoom,
+): number {
+  const { step, work, rhs, diagonal, damped } = room;
   const whole = solveUpper(triangle, projected, n, step);
   let length = scaledNorm(step, scale, n);
   let excess = length - radius;
-  if (whole && excess <= 0.1 * radius) return { damping: 0, step };
+  if (whole && excess <= 0.1 * radius) return 0;
 
   let least = 0;
   if (whole) {
     for (let j = 0; j < n; j += 1) work[j] = (scale[j]! * scale[j]! * step[j]!) / length;
-    const solved = new Float64Array(n);
-    solveLower(triangle, work, n, solved);
-    least = excess / radius / sumSquares(solved);
+    solveLower(triangle, work, n, rhs);
+    least = excess / radius / sumSquares(rhs, n);
   }
   let gradient = 0;
   for (let j = 0; j < n; j += 1) {
@@ -111,15 +122,14 @@ function trustStep(
   gradient = Math.sqrt(gradient);
   let most = gradient / radius || 1e-300 / Math.min(radius, 0.1);
   let par = Math.min(Math.max(damping, least), most) || gradient / (length || 1);
-  const damped = new Float64Array(n * n);
-  const rhs = new Float64Array(n);
-  const diagonal = new Float64Array(n);
   for (let round = 0; round < 10; round += 1) {
     if (par === 0) par = Math.max(1e-300, 0.001 * most);
-    damped.set(triangle.subarray(0, n * n));
-    rhs.set(projected.subarray(0, n));
-    for (let j = 0; j < n; j += 1) diagonal[j] = Math.sqrt(par) * scale[j]!;
-    damp(damped, rhs, diagonal, n);
+    for (let j = 0; j < n * n; j += 1) damped[j] = triangle[j]!;
+    for (let j = 0; j < n; j += 1) {
+      rhs[j] = projected[j]!;
+      diagonal[j] = Math.sqrt(par) * scale[j]!;
+    }
+    damp(damped, rhs, diagonal, n, work);
     solveUpper(damped, rhs, n, step);
     length = scaledNorm(step, scale, n);
     const before = excess;
@@ -127,12 +137,12 @@ function trustStep(
     if (Math.abs(excess) <= 0.1 * radius || (least === 0 && excess <= before && before < 0)) break;
     for (let j = 0; j < n; j += 1) work[j] = (scale[j]! * scale[j]! * step[j]!) / length;
     solveLower(damped, work, n, rhs);
-    const correction = excess / radius / sumSquares(rhs);
+    const correction = excess / radius / sumSquares(rhs, n);
     if (excess > 0) least = Math.max(least, par);
     else if (excess < 0) most = Math.min(most, par);
     par = Math.max(least, par + correction);
   }
-  return { damping: par, step };
+  return par;
 }
 
 /** The fit from one start. A start with residuals that are not numbers, or bounds the wrong way round, is answered `no fit`. */
@@ -142,9 +152,13 @@ export function leastSquares(problem: Problem, start: ArrayLike<number>, options
   const maxIterations = options.maxIterations ?? 200;
   const sumTolerance = options.sumTolerance ?? 1e-12;
   const stepTolerance = options.stepTolerance ?? 1e-11;
-  const lower = Float64Array.from({ length: n }, (_, j) => options.lower?.[j] ?? Number.NEGATIVE_INFINITY);
-  const upper = Float64Array.from({ length: n }, (_, j) => options.upper?.[j] ?? Number.POSITIVE_INFINITY);
-  const x = Float64Array.from(start).slice(0, n);
+  const lower = new Float64Array(n).fill(Number.NEGATIVE_INFINITY);
+  const upper = new Float64Array(n).fill(Number.POSITIVE_INFINITY);
+  for (let j = 0; j < n; j += 1) {
+    lower[j] = options.lower?.[j] ?? lower[j]!;
+    upper[j] = options.upper?.[j] ?? upper[j]!;
+  }
+  const x = new Float64Array(start).slice(0, n);
   const failed = (evaluations: number): LeastSquaresFit => ({
     parameters: x,
     covariance: null,
@@ -169,6 +183,7 @@ export function leastSquares(problem: Problem, start: ArrayLike<number>, options
   const freeScale = new Float64Array(n);
   const trial = new Float64Array(n);
   const full = new Float64Array(n);
+  const room = new StepRoom(n);
   problem.residuals(x, residuals);
   let evaluations = 1;
   let sum = sumSquares(residuals);
@@ -215,10 +230,9 @@ export function leastSquares(problem: Problem, start: ArrayLike<number>, options
     factorise(jacobian, residuals, m, free, triangle, projected);
 
     for (;;) {
-      const { damping: found, step } = trustStep(triangle, projected, freeScale, radius, damping, nf);
-      damping = found;
+      damping = trustStep(triangle, projected, freeScale, radius, damping, nf, room);
       full.fill(0);
-      for (let a = 0; a < nf; a += 1) full[free[a]!] = -step[a]!;
+      for (let a = 0; a < nf; a += 1) full[free[a]!] = -room.step[a]!;
       for (let j = 0; j < n; j += 1) {
         trial[j] = Math.min(upper[j]!, Math.max(lower[j]!, x[j]! + full[j]!));
         full[j] = trial[j]! - x[j]!;
