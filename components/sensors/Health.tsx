@@ -21,6 +21,14 @@ export function daysWords(days: { value: number; lo: number | null; hi: number |
   return hi === null ? `about ${value} ${named}, ${lo} at least` : `about ${value} ${named}, ${lo}–${hi}`;
 }
 
+/** The same in a list: `79–86 days`, `at least 118 days`. */
+export function daysLeftWords(days: { value: number; lo: number | null; hi: number | null } | null): string | null {
+  if (!days) return null;
+  if (days.value < 1) return 'flat';
+  const [lo, hi] = [Math.floor(days.lo ?? days.value), days.hi === null ? null : Math.ceil(days.hi)];
+  return hi === null ? `${lo} days or more` : lo === hi ? `${lo} ${lo === 1 ? 'day' : 'days'}` : `${lo}–${hi} days`;
+}
+
 function clockWords(offset: number | null): string {
   if (offset === null) return 'sends no time';
   if (Math.abs(offset) < 5) return 'right to 5 s';

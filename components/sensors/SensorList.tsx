@@ -12,12 +12,12 @@ import { State } from '@/components/ui/StateMark';
 import type { SensorBody, SensorHealthList, SensorLimits } from '@/lib/contracts/sensors';
 import { useMe } from '@/lib/client/me';
 import { useSensors, useSensorsHealth } from '@/lib/client/sensors';
-import { daysWords } from './Health';
+import { daysLeftWords } from './Health';
 import { cellWords, gravityWords, heardWords, limitWords, linkWords, sensorState, temperatureWords } from './words';
 
 type SensorHealth = SensorHealthList['items'][number];
 
-const COLUMNS = 'strip:grid strip:grid-cols-[8.5rem_minmax(8rem,1.3fr)_minmax(8rem,1.4fr)_6.5rem_8.5rem_4.5rem_8.5rem_5rem] strip:items-center strip:gap-x-4';
+const COLUMNS = 'strip:grid strip:grid-cols-[8.5rem_minmax(8rem,1.3fr)_minmax(8rem,1.4fr)_6.5rem_8.5rem_8.5rem_8rem_5rem] strip:items-center strip:gap-x-4';
 
 /** A figure under its name on a phone, in its column elsewhere. */
 function Cell({ name, children, right = false }: { name: string; children: React.ReactNode; right?: boolean }) {
@@ -33,7 +33,7 @@ function Row({ sensor, health, limits, now, timeZone }: { sensor: SensorBody; he
   const findings = health?.findings.filter((finding) => finding.of !== 'silence') ?? [];
   const { state, word } = sensorState(sensor, now, findings);
   const found = (of: SensorHealth['findings'][number]['of']) => (findings.some((finding) => finding.of === of) ? 'font-semibold text-ochre' : undefined);
-  const days = daysWords(health?.battery_days ?? null);
+  const days = daysLeftWords(health?.battery_days ?? null);
   return (
     <li className="relative border-b border-rule px-(--margin) py-3 hover:bg-lit strip:py-0">
       <div className={`${COLUMNS} strip:min-h-[52px]`}>
@@ -70,12 +70,12 @@ function Row({ sensor, health, limits, now, timeZone }: { sensor: SensorBody; he
               '–'
             )}
           </Cell>
-          <Cell name="cell">
-            <span className={found('battery')}>{cellWords(sensor.last?.battery)}</span>
-            {days && <span className="text-ink2 max-strip:before:content-[',_'] strip:block">{days}</span>}
-          </Cell>
           <Cell name="link">
             <span className={found('signal')}>{linkWords(sensor.last?.signal, limits?.weak_signal_dbm)}</span>
+          </Cell>
+          <Cell name="cell">
+            <span className={found('battery')}>{cellWords(sensor.last?.battery)}</span>
+            {days && <span className="whitespace-nowrap text-ink2 max-strip:before:content-[',_'] strip:block">{days}</span>}
           </Cell>
           <Cell name="refused" right>
             <span className={sensor.refused_24h > 0 ? 'font-semibold text-ochre' : 'text-ink2'}>{sensor.refused_24h}</span>
@@ -145,8 +145,8 @@ export function SensorList() {
             <span>in</span>
             <span>last heard</span>
             <span>last word</span>
-            <span>cell</span>
             <span>link</span>
+            <span>cell, days left</span>
             <span className="text-right">refused</span>
           </div>
           <ul>

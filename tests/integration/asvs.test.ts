@@ -8,7 +8,7 @@ import { buildToken, PASSPHRASE } from '../support/people-rows';
 import { until } from '../support/processes';
 import { call, sessionCookie, signInOverHttp, startWeb, type Web } from '../support/web';
 
-/** Requirements of OWASP ASVS 5.0.0 that concern the way in, by number. What runs without a server stands in people.test.ts. The numbers 7.5.1 and 8.3.2 are from memory. */
+/** Requirements of OWASP ASVS 5.0.0 that concern the way in, by number. What runs without a server stands in people.test.ts. Numbers 7.5.1 and 8.3.2 are from memory. */
 describe('OWASP ASVS 5.0.0', () => {
   const db = useDatabase();
   let web: Web;
@@ -129,7 +129,7 @@ describe('OWASP ASVS 5.0.0', () => {
     }
   });
 
-  it('6.3.1: after wrong guesses the account is locked for longer and longer, and a link by mail still opens it', async () => {
+  it('6.1.1 (the counts stand in DEVELOPERS.md), 6.3.1: after wrong guesses the account is locked for longer and longer, and a link by mail still opens it', async () => {
     const { person } = await member();
     for (let guess = 0; guess < 6; guess += 1) await signInOverHttp(web, { email: person.email, password: 'guess' }, from());
     expect((await signInOverHttp(web, { email: person.email, password: PASSPHRASE }, from())).error).toMatch(/^throttled:/);
@@ -212,7 +212,7 @@ describe('OWASP ASVS 5.0.0', () => {
     expect(await status(here.cookie)).toBe(401);
   });
 
-  it('7.5.1: what would hurt at an open screen asks for the passphrase again', async () => {
+  it('7.5.1 (from memory): what would hurt at an open screen asks for the passphrase again', async () => {
     const keeper = await member('keeper');
     const heir = await member('hand', keeper.cellarId);
     const { cookie } = await sessionCookie(keeper.personId);
@@ -263,7 +263,7 @@ describe('OWASP ASVS 5.0.0', () => {
     expect((await get(orphan.token)).status).toBe(401);
   });
 
-  it('8.3.2: a removed member’s open session and open streams, by cookie and by token, end within seconds', async () => {
+  it('8.3.2 (from memory): a removed member’s open session and open streams, by cookie and by token, end within seconds', async () => {
     const keeper = await member('keeper');
     const hand = await member('hand', keeper.cellarId);
     const { cookie } = await sessionCookie(hand.personId);

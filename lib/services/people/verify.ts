@@ -39,7 +39,7 @@ export async function takeCode(person: Person, code: string, now: number, transa
 
 /**
  * The person, once they have shown the passphrase again: for what would hurt if
- * somebody sat down at an open screen (OWASP ASVS 5.0 7.5.1).
+ * somebody sat down at an open screen (OWASP ASVS 5.0 7.5.1, from memory).
  * @throws InvalidError where it is wrong, ThrottledError after too many.
  */
 export async function confirmedPerson(personId: string, passphrase: string, field = 'passphrase'): Promise<Person> {

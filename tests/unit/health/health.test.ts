@@ -32,6 +32,15 @@ describe('days left of a cell', () => {
     expect(batteryForecast(cell(10, (daysAgo) => 3.2 + 0.01 * daysAgo), 3.3, NOW)).toMatchObject({ days: 0, lo: 0, hi: 0 });
   });
 
+  it('is zero for one that dropped at its end, which a line through a month does not see, and with few days too', () => {
+    const dropped = (daysAgo: number) => (daysAgo < 0.2 ? 2.9 : 3.9 + 0.005 * daysAgo);
+    expect(batteryForecast(cell(25, dropped), 3.3, NOW)).toMatchObject({ days: 0, lo: 0, hi: 0 });
+    expect(batteryForecast(cell(2, dropped), 3.3, NOW)).toEqual({ perDay: null, days: 0, lo: 0, hi: 0 });
+    const once = cell(25, (daysAgo) => 3.9 + 0.005 * daysAgo);
+    once[0]!.volts = 2.9;
+    expect(batteryForecast(once, 3.3, NOW)!.days).toBeGreaterThan(100);
+  });
+
   it('does not trip over one wild voltage', () => {
     const readings = cell(20, (daysAgo) => 3.9 + 0.01 * daysAgo);
     readings[30]!.volts = 0;
