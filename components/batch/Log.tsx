@@ -37,7 +37,7 @@ function TakeBack({ batchId, entryId }: { batchId: string; entryId: string }) {
     );
   }
   return (
-    <span className="flex flex-wrap items-center justify-end gap-2">
+    <span data-asked className="flex flex-wrap items-center justify-end gap-2">
       {failed && <FormError>{failed}</FormError>}
       <Button size="lane" look="final" onClick={() => void removeEntry(batchId, entryId).catch((error: unknown) => setFailed(error instanceof ClientError ? error.message : 'It is still there. Try again.'))}>
         Take it back
@@ -112,7 +112,7 @@ function Row({ row, batchId, now, timeZone, onCorrect }: RowProps) {
         {entry && <Photos place={{ batch: batchId }} on={{ entry: entry.id }} />}
         {entry && before && <Corrections entry={entry} now={now} timeZone={timeZone} />}
       </div>
-      <span className="flex flex-wrap items-center justify-end gap-x-3 justify-self-end max-strip:col-span-2 max-strip:col-start-2 max-strip:row-start-3 max-strip:gap-x-5 strip:col-start-4">
+      <span className="flex flex-wrap items-center justify-end gap-x-3 justify-self-end max-strip:col-span-2 max-strip:col-start-2 max-strip:row-start-2 max-strip:gap-x-5 max-strip:self-end max-strip:has-data-asked:row-start-3 strip:col-start-4">
         {row.mine && entry && isLogged(entry.kind) && (
           <button type="button" className={SMALL} onClick={() => onCorrect(entry)}>
             correct
