@@ -30,6 +30,25 @@ it('goes down and up again on a database with data in it', async () => {
   expect(await Cellar.count()).toBe(0);
 });
 
+it('takes cautions that were lifted before they had a table of their own out of the trail', async () => {
+  await migrator(db.sequelize).down({ migrations: ['0012-lifted-cautions'] });
+  const cellar = await Cellar.create({ name: 'Low barn' });
+  const batch = await Batch.create({ cellarId: cellar.id, name: 'Perry', kind: 'cider', drinkColour: 'pale', vesselKind: 'carboy', volumeL: 9, vesselL: 10, neck: 'airlock' });
+  const [[lot]] = (await db.sequelize.query(
+    `insert into lots (cellar_id, batch_id, code, name, bottled_at, ready_from, volume_l, sparkle, bench) values ($cellarId, $batchId, 'LB-1', 'Perry', now(), now(), 4, 'light', '{}') returning id`,
+    { bind: { cellarId: cellar.id, batchId: batch.id } },
+  )) as unknown as [[{ id: string }]];
+  const line = (subject: string, action: string, detail: object) => db.sequelize.query(`insert into audit (cellar_id, action, subject, detail, at) values ($cellarId, $action, $subject, $detail::jsonb, '2026-03-01T12:00:00Z')`, { bind: { cellarId: cellar.id, action, subject, detail: JSON.stringify(detail) } });
+  await line(lot.id, 'lot.caution-lifted', { code: 'LB-1', caution: 'A bottle gushed.', reason: 'Three opened since, all still.' });
+  await line('not an id', 'lot.caution-lifted', { caution: 'x', reason: 'y' });
+  await line(lot.id, 'lot.updated', {});
+  await migrate(db.sequelize);
+  expect(await db.sequelize.query('select lot_id as lot, caution, reason, at, cellar_id as cellar from caution_lifts', { type: QueryTypes.SELECT })).toEqual([
+    { lot: lot.id, caution: 'A bottle gushed.', reason: 'Three opened since, all still.', at: new Date('2026-03-01T12:00:00Z'), cellar: cellar.id },
+  ]);
+  await cellar.destroy();
+});
+
 it('migrates once when several processes start together', async () => {
   const ran = await Promise.all([migrate(db.sequelize), migrate(db.sequelize)]);
   expect(ran.flat()).toHaveLength(0);
