@@ -1,5 +1,6 @@
 import { selectPart, type PartRow } from '@/db/queries/archive-parts';
-import { ARCHIVE_PARTS, PART_NAMES, type ArchivePart } from '@/lib/contracts/archive-parts';
+import type { ArchivePart } from '@/lib/contracts/archive-fields';
+import { ARCHIVE_PARTS, PART_NAMES } from '@/lib/contracts/archive-parts';
 import { namesOf } from '../entries/names';
 
 /** People leave by their names: an id says nothing in another house. */
