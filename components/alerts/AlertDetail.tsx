@@ -139,7 +139,9 @@ export function AlertDetail({ alert, now, timeZone, mayTake, mayClear, taking, o
           {told.map((line) => (
             <li key={line.text} className="type-body flex items-center gap-3">
               <ToldMark state={line.state} />
-              <Sentence>{line.text.charAt(0).toUpperCase() + line.text.slice(1)}</Sentence>
+              <span>
+                <Sentence>{line.text.charAt(0).toUpperCase() + line.text.slice(1)}</Sentence>
+              </span>
             </li>
           ))}
         </ul>
