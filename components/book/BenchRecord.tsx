@@ -1,3 +1,4 @@
+import { How } from '@/components/ui/How';
 import { GroupBar } from '@/components/ui/Page';
 import { Sentence } from '@/components/ui/Sentence';
 import { State } from '@/components/ui/StateMark';
@@ -6,6 +7,7 @@ import type { LotBody } from '@/lib/contracts/lots';
 /** How the bench judged it; a stop that was put aside stays for good. */
 export function BenchRecord({ lot, day }: { lot: LotBody; day: (at: string) => string }) {
   const { bench, override } = lot;
+  const worst = lot.bottles.toSorted((a, b) => b.worst_bar - a.worst_bar)[0];
   return (
     <section aria-label="From the bench">
       <GroupBar word="From the bench" />
@@ -22,6 +24,7 @@ export function BenchRecord({ lot, day }: { lot: LotBody; day: (at: string) => s
             <Sentence>{`At most ${bench.worst_bar.toFixed(1)} bar, standing no warmer than ${bench.warmest_store_c} °C.`}</Sentence>
           </li>
         </ul>
+        {worst && <How how={worst.how.worst} of="the worst case" />}
         {override && (
           <blockquote className="type-body mt-2 border-l-[3px] border-madder pl-3">
             {override.reason}

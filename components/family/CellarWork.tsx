@@ -41,6 +41,8 @@ const MOVES: readonly Tab[] = ['split', 'blend'];
 const WITH_ADDITIONS = (drink: DrinkBody): HowAnswer =>
   how('original gravity with all that went in since: masses of liquid, extract and alcohol are conserved', SOURCES.massBalance, [['at the pitch', drink.original_gravity, 'SG']]);
 
+const AS_TOLD: HowAnswer = how('as told in the set-up, or the reading at the pitch; nothing that went in since has moved it', SOURCES.told);
+
 const VOLUME_BY_LOG: HowAnswer = how('what was told at the pitch, with every racking, topping up, split, blend and bottling of the log since', SOURCES.told);
 
 const BY_WORDS = { float: 'the curve through the readings of its float', hydrometer: 'the last hydrometer reading, at 20 °C', refractometer: 'the last refractometer reading, with the alcohol reckoned in; good to 0.004, and what alcohol adds to it is recalled, not checked' } as const;
@@ -53,7 +55,7 @@ const SULPHITE_SO_FAR: HowAnswer = how('all sulphite that the must brought and t
 function InIt({ drink }: { drink: DrinkBody }) {
   const facts = [
     { name: 'in it', says: litres(drink.volume_l), how: VOLUME_BY_LOG },
-    { name: 'original gravity', says: drink.effective_og === null ? 'not told' : gravityText(drink.effective_og), how: drink.effective_og === drink.original_gravity ? undefined : WITH_ADDITIONS(drink) },
+    { name: 'original gravity', says: drink.effective_og === null ? 'not told' : gravityText(drink.effective_og), how: drink.effective_og === null ? undefined : drink.effective_og === drink.original_gravity ? AS_TOLD : WITH_ADDITIONS(drink) },
     { name: 'gravity', says: drink.gravity === null ? 'not read' : `${gravityText(drink.gravity)}${drink.gravity_by ? ` by ${drink.gravity_by}` : ''}`, how: drink.gravity === null ? undefined : GRAVITY_BY(drink) },
     { name: 'strength', says: drink.strength ? percent(drink.strength.balling.value.value) : 'not known', how: drink.strength?.balling.how },
     { name: 'temperature', says: drink.temperature_c === null ? 'not told' : degrees(drink.temperature_c), how: drink.temperature_c === null ? undefined : LAST_TOLD },

@@ -2,7 +2,7 @@
 
 import { useState } from 'react';
 import { Sheet } from '@/components/batch/Sheet';
-import { HowBody } from '@/components/ui/How';
+import { HOW_LINK, HowBody } from '@/components/ui/How';
 import type { How } from '@/lib/core/how/how';
 
 /** A figure as it is shown, with where it comes from. */
@@ -13,11 +13,11 @@ export interface Answer {
 }
 
 /** One question for the figures of a row or a strip that has no room for an answer below each: they are answered together, over the page. */
-export function AskHow({ of, answers, tight = false, className = '' }: { /** What the figures are of, for those who hear the page. */ of: string; /** Asked for when somebody wants to know. */ answers: () => readonly Answer[]; /** In a row that must not grow: the finger's room lies around it. */ tight?: boolean; className?: string }) {
+export function AskHow({ of, answers, tight = false, className = '' }: { /** What the figures are of, for those who hear the page. */ of: string; /** Asked for when somebody wants to know. */ answers: () => readonly Answer[]; /** In a line of words that must not grow. */ tight?: boolean; className?: string }) {
   const [open, setOpen] = useState(false);
   return (
     <>
-      <button type="button" onClick={() => setOpen(true)} className={`type-tick not-printed inline-flex items-center text-ink2 underline decoration-rule2 underline-offset-2 hover:text-ink ${tight ? "relative after:absolute after:-inset-x-2 after:-inset-y-3 after:content-[''] strip:after:-inset-y-1" : 'min-h-11 strip:min-h-6'} ${className}`}>
+      <button type="button" onClick={() => setOpen(true)} className={`${HOW_LINK} text-ink2 decoration-rule2 ${tight ? 'min-h-0!' : ''} ${className}`}>
         how?<span className="heard-only"> {of}</span>
       </button>
       {open && (

@@ -1,7 +1,8 @@
 import { gravityText, percent } from '@/components/batch/figures';
 import { volumeText } from '@/components/ui/units';
 import type { BatchBody } from '@/lib/contracts/batches';
-import { howOfJudged, type JudgedFigure, type JudgedFrom } from '@/lib/core/how/judged';
+import { howOfCall, howOfJudged, type JudgedFigure, type JudgedFrom } from '@/lib/core/how/judged';
+import type { CallName } from '@/lib/core/types';
 import type { Answer } from './AskHow';
 
 type Judged = Pick<BatchBody, 'original_gravity' | 'volume_l' | 'yeast' | 'sensor' | 'assessment'>;
@@ -40,13 +41,15 @@ export function answersOfFacts(batch: Judged, facts: readonly { name: string; fi
   return [...told, { name: 'volume', says: volumeText(batch.volume_l), how: howOfJudged('volume', from) }];
 }
 
-/** Answers for what a lane of the shelf says of its batch. */
-export function answersOfLane(batch: Judged): Answer[] {
+/** Answers for what a lane of the shelf says of its batch, and for the call that speaks there. */
+export function answersOfLane(batch: Judged, name: CallName): Answer[] {
   const { assessment: judged, original_gravity: og } = batch;
-  return answersOfFacts(batch, [
+  const call = judged?.calls[name];
+  const said = [
     ...(og === null ? [] : [{ name: 'original gravity', figure: gravityText(og) }]),
     ...(judged?.gravity ? [{ name: 'now', figure: gravityText(judged.gravity.value) }] : []),
     ...(judged?.final_gravity ? [{ name: 'bed', figure: gravityText(judged.final_gravity.value) }] : []),
     ...(judged?.abv_percent ? [{ name: 'strength so far', figure: percent(Math.max(0, judged.abv_percent.value)) }] : []),
-  ]);
+  ];
+  return [...(call ? [{ name: 'its call', says: call.headline, how: howOfCall(name, call.evidence) }] : []), ...answersOfFacts(batch, said)];
 }

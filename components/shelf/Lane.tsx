@@ -2,15 +2,13 @@
 
 import Link from 'next/link';
 import type { Span } from '@/components/charts/picture';
-import { AskHow } from '@/components/how/AskHow';
-import { answersOfLane } from '@/components/how/judged';
 import { LaneMuted } from '@/components/messages/BatchMute';
 import type { PageLayout } from '@/components/ui/layout';
 import { Sentence } from '@/components/ui/Sentence';
 import { State } from '@/components/ui/StateMark';
 import { vesselOf } from '@/components/vessel/describe';
 import { Vessel } from '@/components/vessel/Vessel';
-import { LaneButton, LaneCall } from './LaneCall';
+import { HowLane, LaneButton, LaneCall } from './LaneCall';
 import { dayWords, laneFigures, litres, type LaneView } from './lanes';
 import { LanePicture } from './LanePicture';
 
@@ -47,9 +45,6 @@ function Name({ view, className }: { view: LaneView; className: string }) {
   );
 }
 
-/** Where the figures of the lane come from; above the link that covers it. */
-const HowLane = ({ view: { lane } }: Pick<LaneProps, 'view'>) => <AskHow tight of={`figures of ${lane.name}`} answers={() => answersOfLane(lane)} className="z-10 shrink-0" />;
-
 const paper = (view: LaneView) => (view.attention.group === 'now' ? 'bg-lit' : 'bg-sheet');
 
 function Meta({ view, now, timeZone, low }: Pick<LaneProps, 'view' | 'now' | 'timeZone'> & { low: boolean }) {
@@ -82,10 +77,7 @@ export function Lane({ view, span, now, timeZone, staleAt, mayTake, layout }: La
           <Vessel vessel={vesselOf(lane, rackedWhenFinished(view))} height={VESSEL[group]} />
         </div>
         <div className={`flex min-w-0 flex-col ${middle ? 'gap-2' : 'justify-between'} ${low ? 'pb-1 pt-[3px]' : group === 'now' ? 'pb-[19px] pt-[6px]' : 'pb-[14px] pt-[6px]'}`}>
-          <div className="flex items-baseline justify-between gap-2">
-            <Name view={view} className={`min-w-0 ${low ? 'type-name-low' : 'type-name'}`} />
-            <HowLane view={view} />
-          </div>
+          <Name view={view} className={low ? 'type-name-low' : 'type-name'} />
           <div className="flex flex-wrap items-end justify-between gap-x-2">
             <Meta view={view} now={now} timeZone={timeZone} low={low} />
             <span className="ml-auto flex flex-col items-end">

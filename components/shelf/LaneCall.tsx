@@ -1,6 +1,8 @@
 'use client';
 
 import { useState } from 'react';
+import { AskHow } from '@/components/how/AskHow';
+import { answersOfLane } from '@/components/how/judged';
 import { LaneMuted } from '@/components/messages/BatchMute';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Sentence } from '@/components/ui/Sentence';
@@ -8,6 +10,11 @@ import { State } from '@/components/ui/StateMark';
 import { acknowledgeAlert } from '@/lib/client/alerts';
 import { ClientError } from '@/lib/client/fetcher';
 import type { LaneView } from './lanes';
+
+/** Where the figures of the lane and of its call come from; above the link that covers the lane. */
+export function HowLane({ view: { lane, attention } }: { view: LaneView }) {
+  return <AskHow tight of={`figures of ${lane.name}`} answers={() => answersOfLane(lane, attention.call)} className="z-10 shrink-0" />;
+}
 
 /** At most one: take it while nobody has it, else go and look. */
 export function LaneButton({ view, mayTake }: { view: LaneView; mayTake: boolean }) {
@@ -60,7 +67,10 @@ export function LaneCall({ view, mayTake }: { view: LaneView; mayTake: boolean }
           <State state={attention.state} />
         </span>
         <LaneMuted batchId={view.lane.id} />
-        <span className="type-label text-right text-ink2">{view.when}</span>
+        <span className="type-label ml-auto flex items-baseline gap-3 text-right text-ink2">
+          <HowLane view={view} />
+          {view.when}
+        </span>
       </div>
       {low ? (
         <p className="two-lines type-verdict-leave">

@@ -28,12 +28,15 @@ export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; ti
         <Haze height={80} label="Loading the notes" className="m-(--margin)" />
       ) : (
         <>
-          <div className="flex flex-wrap items-center gap-x-6 gap-y-2 border-b px-(--margin) py-2">
-            <div>
-              <p className="type-fig-lg">{spreadWords(summary.score, 10)}</p>
-              {summary.count > 0 && <How how={HOW_TASTED} of="averages of the notes" />}
-            </div>
-            <dl className="type-label flex flex-wrap gap-x-5 text-ink2">
+          <div className="flex flex-wrap items-center gap-x-6 gap-y-1 border-b px-(--margin) py-2">
+            <p className="type-fig-lg">{spreadWords(summary.score, 10)}</p>
+            {summary.count > 0 && <How how={HOW_TASTED} of="averages of the notes" className="open:order-last open:w-full" />}
+            {mayTaste && (
+              <Button className="ml-auto" onClick={() => setOpen(true)}>
+                Taste it
+              </Button>
+            )}
+            <dl className="type-label flex w-full flex-wrap gap-x-5 text-ink2">
               {ASPECTS.map((aspect) => (
                 <div key={aspect}>
                   <dt className="inline">{aspect} </dt>
@@ -47,11 +50,6 @@ export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; ti
                 </div>
               ))}
             </dl>
-            {mayTaste && (
-              <Button className="ml-auto" onClick={() => setOpen(true)}>
-                Taste it
-              </Button>
-            )}
           </div>
           <ul>
             {tastings.map((tasting) => (

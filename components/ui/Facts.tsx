@@ -2,7 +2,7 @@
 
 import { useId, useState } from 'react';
 import type { How as HowAnswer } from '@/lib/core/how/how';
-import { HowBody } from './How';
+import { HOW_LINK, HowBody } from './How';
 
 export interface Fact {
   name: string;
@@ -30,7 +30,7 @@ export function Facts({ facts, columns, className = '' }: { facts: readonly Fact
                   aria-expanded={asked === fact.name}
                   aria-controls={panel}
                   onClick={() => setAsked(asked === fact.name ? null : fact.name)}
-                  className={`type-tick not-printed inline-flex min-h-11 items-center underline underline-offset-2 hover:text-ink strip:min-h-6 ${asked === fact.name ? 'text-ink decoration-ink' : 'text-ink2 decoration-rule2'}`}
+                  className={`${HOW_LINK} ${asked === fact.name ? 'text-ink decoration-ink' : 'text-ink2 decoration-rule2'}`}
                 >
                   how?<span className="heard-only"> {fact.name}</span>
                 </button>

@@ -49,11 +49,14 @@ export function HowBody({ how }: { how: HowAnswer }) {
   );
 }
 
+/** The question as it looks: low in its row, with a finger's room around it on a phone. */
+export const HOW_LINK = "type-tick not-printed relative inline-flex min-h-6 items-center underline underline-offset-2 hover:text-ink max-strip:after:absolute max-strip:after:-inset-x-2.5 max-strip:after:-inset-y-2.5 max-strip:after:content-['']";
+
 /** Every figure can be asked "how?": its formula, what went into it, and where the formula is from. */
 export function How({ how, of, named = false, className = '' }: { how: HowAnswer; /** Which figure, for those who hear the page. */ of: string; /** Said on the screen too, where several stand together. */ named?: boolean; className?: string }) {
   return (
     <details className={`group/how not-printed min-w-0 ${className}`}>
-      <summary className="type-tick inline-flex min-h-11 cursor-pointer list-none items-center text-ink2 underline decoration-rule2 underline-offset-2 hover:text-ink strip:min-h-6 [&::-webkit-details-marker]:hidden">
+      <summary className={`${HOW_LINK} cursor-pointer list-none text-ink2 decoration-rule2 [&::-webkit-details-marker]:hidden`}>
         how?{named ? ` ${of}` : <span className="heard-only"> {of}</span>}
       </summary>
       <HowBody how={how} />

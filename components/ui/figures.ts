@@ -2,7 +2,7 @@ const DAY = '(?:Mon|Tue|Wed|Thu|Fri|Sat|Sun)';
 const MONTH = '(?:Jan|Feb|Mar|Apr|May|Jun|Jul|Aug|Sep|Oct|Nov|Dec)';
 const TIME = '\\d{1,2}:\\d{2}';
 const DATE = `\\d{1,2}(?:[–-]\\d{1,2})? ${MONTH}(?:[–-]\\d{1,2} ${MONTH})?(?: \\d{4})?`;
-const UNIT = '(?:%|°C|°F|°Bx|°P|gal|L/h|g/L|L/d|L|kg|g|h|min|s|days?|weeks?|points?(?:/d| a day)?|volumes?|bar|mm|mV|V|dBm|in \\d+)';
+const UNIT = '(?:%|°C|°F|°Bx|°P|gal|L/h|g/L|mg/L|mg|ml|L/d|L|kg|g|h|min|s|days?|weeks?|points?(?:/d| a day)?|volumes?|bar|mm|mV|V|dBm|in \\d+)';
 const NUMBER = '\\d+(?:[.,]\\d+)*';
 const SIGNED = `(?:[±−+] ?|-)?${NUMBER}(?:[–-]${NUMBER})?(?:[  ]?${UNIT}(?![\\w°]))?(?: ± ${NUMBER})?`;
 

@@ -1,6 +1,9 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Page } from 'playwright-core';
 import type { Actor } from '@/lib/auth/policies';
+import { Entry } from '@/db/models';
+import { createJob as createJobForm } from '@/lib/contracts/jobs';
+import { createJob } from '@/lib/services/jobs/create';
 import { createMust } from '@/lib/services/musts/create';
 import { aLine, aSheet, ciderAt } from '../support/cellar';
 import { expectNoSidewaysScroll, useBrowser } from '../support/browser';
@@ -90,7 +93,42 @@ describe('a must sheet', () => {
   });
 });
 
+describe('the rounds', () => {
+  it('of 25 jobs in five places are printed on one page, each of them', async () => {
+    const walker = await buildMember('brewer');
+    const batches = await Promise.all(['by the sink', 'long shelf', 'north wall', 'under the stairs'].map((place, index) => ciderAt(walker, { batch: { place, tag: index + 1, name: `The ${place} perry of the second pressing` } })));
+    const titles = Array.from({ length: 25 }, (_, index) => `Look at the water in the airlock, number ${index + 1}`);
+    for (const [index, title] of titles.entries()) await createJob(walker, createJobForm.parse({ title, note: 'Top it up with boiled water.', due_at: new Date(Date.now() - 60_000).toISOString(), batch_id: batches[index % 5]?.id ?? null }));
+    const { page, context } = await browser.visitAs(walker.personId, web.url);
+    await open(page, '/rounds');
+    await page.getByRole('checkbox').nth(24).waitFor();
+    await page.emulateMedia({ media: 'print' });
+    for (const title of titles) await page.locator('.work-sheet').getByText(title, { exact: true }).waitFor();
+    expect(await pages(page)).toBe(1);
+    await context.close();
+  });
+});
+
 describe('what is done to a drink', () => {
+  it('is not logged for now where its time is typed half way', async () => {
+    const batch = await ciderAt(brewer);
+    const racked = () => Entry.count({ where: { batchId: batch.id, kind: 'rack' } });
+    const { page, context } = await visit();
+    await open(page, `/batches/${batch.id}/work?do=rack`);
+    await page.getByLabel('Left on the lees and in the hose').fill('0.3');
+    const when = page.getByLabel('When', { exact: true });
+    await when.focus();
+    await page.keyboard.type('12');
+    await page.getByRole('button', { name: 'Racked', exact: true }).click();
+    await page.getByText('is not a whole day and time yet').waitFor();
+    expect(await racked()).toBe(0);
+    await when.focus();
+    await page.keyboard.press('Backspace');
+    await page.getByRole('button', { name: 'Racked', exact: true }).click();
+    await expect.poll(racked).toBe(1);
+    await context.close();
+  });
+
   it('is told before it is done, and the log agrees', async () => {
     const batch = await ciderAt(brewer);
     const { page, context, complaints } = await visit();
