@@ -14,8 +14,8 @@ function Call({ operation }: { operation: Operation }) {
   const [open, setOpen] = useState(false);
   return (
     <li className="border-b border-rule">
-      <button type="button" aria-expanded={open} onClick={() => setOpen(!open)} className="grid min-h-11 w-full grid-cols-[4.5rem_minmax(0,1fr)] items-baseline gap-x-3 px-(--margin) py-2 text-left hover:bg-lit strip:grid-cols-[4.5rem_minmax(0,24rem)_minmax(0,1fr)]">
-        <span className="font-mono text-[0.75rem] font-bold">{operation.method}</span>
+      <button type="button" aria-expanded={open} onClick={() => setOpen(!open)} className="grid min-h-11 w-full grid-cols-[5.25rem_minmax(0,1fr)] items-baseline gap-x-3 px-(--margin) py-2 text-left hover:bg-lit strip:grid-cols-[5.25rem_minmax(0,24rem)_minmax(0,1fr)]">
+        <span className="opens whitespace-nowrap font-mono text-[0.75rem] font-bold">{operation.method}</span>
         <span className="min-w-0 break-all font-mono text-[0.8125rem]">{operation.path.replace('/api/v1', '')}</span>
         <span className="type-body text-ink2 max-strip:col-start-2">{operation.summary}</span>
       </button>

@@ -41,7 +41,7 @@ function Line({ line, timeZone }: { line: TrailLine; timeZone: string }) {
       </p>
       <span className="type-label text-ink2 strip:text-right">
         {line.address ?? ''}
-        {line.means && line.means !== 'session' && `, ${line.means}`}
+        {line.means && line.means !== 'session' && `, ${line.means === 'open' ? 'not signed in' : line.means}`}
       </span>
     </li>
   );

@@ -62,3 +62,19 @@ export function trail({ cellarId, personId, kind, from, to, before, limit }: Tra
     },
   );
 }
+
+/** What things of a cellar are called, by their identifier; an alert by its vessel, a lot by its code. */
+export async function thingNames(cellarId: string, identifiers: readonly string[]): Promise<Map<string, string>> {
+  if (identifiers.length === 0) return new Map();
+  const rows = await database().query<{ key: string; name: string }>(
+    `with wanted as (select distinct unnest($identifiers::text[]) as key),
+     ids as (select key, key::uuid as id from wanted where key ~ '^[0-9a-f]{8}-[0-9a-f]{4}-[0-9a-f]{4}-[0-9a-f]{4}-[0-9a-f]{12}$')
+     select i.key, b.name from ids i join batches b on b.id = i.id where b.cellar_id = $cellarId
+     union all select i.key, b.name from ids i join alerts a on a.id = i.id join batches b on b.id = a.batch_id where a.cellar_id = $cellarId
+     union all select i.key, l.code from ids i join lots l on l.id = i.id where l.cellar_id = $cellarId
+     union all select i.key, m.name from ids i join must_sheets m on m.id = i.id where m.cellar_id = $cellarId
+     union all select w.key, s.name from wanted w join sensors s on s.identifier = w.key where s.cellar_id = $cellarId`,
+    { bind: { cellarId, identifiers: [...identifiers] }, type: QueryTypes.SELECT },
+  );
+  return new Map(rows.map(({ key, name }) => [key, name]));
+}

@@ -1,12 +1,12 @@
 import { stringify } from 'csv-stringify/sync';
-import { trail, type TrailFilter, type TrailRow } from '@/db/queries/trail';
+import { thingNames, trail, type TrailFilter, type TrailRow } from '@/db/queries/trail';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import type { TrailLine, TrailQuery } from '@/lib/contracts/people';
 import { InvalidError } from '@/lib/errors';
 import { namesOf } from '../entries/names';
 import { iso } from '../iso';
-import { says } from './words';
+import { about, says } from './words';
 
 /** More than a cellar writes in years; an export past it is asked for by its dates. */
 const MOST_EXPORTED = 50_000;
@@ -20,7 +20,10 @@ const whereOf = (filter: Filter): Omit<TrailFilter, 'cellarId' | 'limit'> => ({
   to: filter.to === undefined ? undefined : new Date(filter.to),
 });
 
-const aboutMembers = (rows: readonly TrailRow[]) => namesOf(rows.filter((row) => row.action.startsWith('member.')).map((row) => row.subject));
+async function namesIn(rows: readonly TrailRow[], cellarId: string | null): Promise<Map<string, string>> {
+  const people = await namesOf(rows.filter((row) => row.action.startsWith('member.')).map((row) => row.subject));
+  return cellarId === null ? people : new Map([...(await thingNames(cellarId, rows.flatMap(about))), ...people]);
+}
 
 function present(row: TrailRow, names: ReadonlyMap<string, string>): TrailLine {
   return {
@@ -46,7 +49,7 @@ function cursorOf(cursor: string | undefined): number | undefined {
 async function page(filter: TrailFilter): Promise<{ items: TrailLine[]; next_cursor: string | null }> {
   const rows = await trail({ ...filter, limit: filter.limit + 1 });
   const shown = rows.slice(0, filter.limit);
-  const names = await aboutMembers(shown);
+  const names = await namesIn(shown, filter.cellarId);
   return { items: shown.map((row) => present(row, names)), next_cursor: rows.length > filter.limit ? String(shown.at(-1)!.id) : null };
 }
 
@@ -64,7 +67,7 @@ export async function listAccountTrail(personId: string, { cursor, limit, ...fil
 async function whole(actor: Actor, filter: Filter): Promise<TrailLine[]> {
   authorize(actor, 'audit.read');
   const rows = await trail({ ...whereOf(filter), cellarId: actor.cellarId, limit: MOST_EXPORTED });
-  const names = await aboutMembers(rows);
+  const names = await namesIn(rows, actor.cellarId);
   return rows.map((row) => present(row, names));
 }
 

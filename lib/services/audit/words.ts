@@ -82,10 +82,19 @@ const SAYS: Record<string, Says> = {
   'lot.moved-against-a-stop': () => 'moved bottles against a stop',
 };
 
-/** For all else the action's own name does: `place.removed` reads “place removed”. */
+/** Identifiers of what a line is about, the nearest to a person's mind first. */
+export const about = ({ detail, subject }: Pick<TrailRow, 'detail' | 'subject'>): string[] => [text(detail.batch), text(detail.lot), subject].filter((key) => key !== '');
+
+/** For all else the action's own name does: `place.removed` reads “place removed”. What it was done to follows, where that has a name still. */
 export function says(row: Pick<TrailRow, 'action' | 'detail' | 'subject'>, names: ReadonlyMap<string, string>): string {
+  const thing = about(row).flatMap((key) => names.get(key) ?? [])[0] ?? null;
+  const said = saidOf(row, thing);
+  return thing === null || said.includes(thing) ? said : `${said}: ${thing}`;
+}
+
+function saidOf(row: Pick<TrailRow, 'action' | 'detail' | 'subject'>, thing: string | null): string {
   const known = SAYS[row.action];
-  if (known) return known(row.detail, row.action.startsWith('member.') ? (names.get(row.subject) ?? null) : row.subject);
+  if (known) return known(row.detail, row.action.startsWith('member.') ? thing : (thing ?? row.subject));
   const name = text(row.detail.name) || text(row.detail.title);
   return `${row.action.replace(/[._-]/g, ' ')}${name ? `: ${name}` : ''}`;
 }

@@ -1,0 +1,43 @@
+import { expect, it } from 'vitest';
+import { Alert, AuditRow } from '@/db/models';
+import { trailQuery } from '@/lib/contracts/people';
+import { listTrail, trailAsCsv } from '@/lib/services/audit/list';
+import { useDatabase } from '../support/database';
+import { buildBatch, buildMember, buildSensor } from '../support/factories';
+
+useDatabase();
+
+it('the trail says what was done to what, by the names that things have in this cellar', async () => {
+  const keeper = await buildMember('keeper');
+  const { cellarId, personId } = keeper;
+  const batch = await buildBatch({ cellarId, name: 'Perry' });
+  const { sensor } = await buildSensor({ cellarId, name: 'Float 4' });
+  const alert = await Alert.create({ cellarId, batchId: batch.id, call: 'stalled', level: 'check', state: 'open', since: new Date(), openedAt: new Date(), evidence: {} } as never);
+  const foreign = await buildBatch({ name: 'Another cellar’s' });
+  const lines: Array<[action: string, subject: string, detail?: object]> = [
+    ['batch.muted', batch.id],
+    ['alert.acknowledge', alert.id],
+    ['entry.created', '00000000-0000-4000-8000-000000000001', { batch: batch.id, kind: 'note' }],
+    ['sensor.rotated', sensor.identifier],
+    ['batch.created', batch.id, { name: 'Perry' }],
+    ['member.removed', personId],
+    // None of ours, gone, or no identifier at all.
+    ['batch.muted', foreign.id],
+    ['batch.updated', '00000000-0000-4000-8000-000000000002'],
+    ['batch.updated', "'; drop table batches; --"],
+  ];
+  for (const [action, subject, detail = {}] of lines) await AuditRow.create({ cellarId, personId, action, subject, detail });
+  const { items } = await listTrail(keeper, trailQuery.parse({}));
+  expect(items.map((line) => line.says).reverse()).toEqual([
+    'muted a vessel: Perry',
+    'took an alert in hand: Perry',
+    'logged: note: Perry',
+    'gave the sensor Float 4 a new secret',
+    'started Perry',
+    `took ${keeper.person.name} out of the cellar`,
+    'muted a vessel',
+    'changed a batch',
+    'changed a batch',
+  ]);
+  expect(await trailAsCsv(keeper, trailQuery.parse({}))).not.toContain('Another cellar');
+});
