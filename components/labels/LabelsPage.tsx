@@ -11,6 +11,7 @@ import { Haze } from '@/components/ui/Haze';
 import { How } from '@/components/ui/How';
 import { EmptyState, ErrorState } from '@/components/ui/Notice';
 import { PageHead } from '@/components/ui/Page';
+import { Sentence } from '@/components/ui/Sentence';
 import { labelsPdfUrl, useLabelFacts, useLots } from '@/lib/client/lots';
 import { useMe } from '@/lib/client/me';
 import { STOCK_KEYS, STOCKS, type Design, type LabelFacts, type StockKey } from '@/lib/contracts/labels';
@@ -143,12 +144,16 @@ function Facts({ label }: { label: LabelFacts }) {
       <dd>
         {suggestion.name}
         <How of="Name" how={{ formula: suggestion.rule, inputs: [], source: suggestion.source, status: suggestion.status as 'published' }} />
-        <p className="type-reason text-ink2">{suggestion.law}</p>
+        <p className="type-reason text-ink2">
+          <Sentence>{suggestion.law}</Sentence>
+        </p>
       </dd>
       <dt className="type-label pt-2 text-ink2">strength</dt>
       <dd>
-        {label.strength.text ?? 'not known'}
-        <p className="type-reason text-ink2">{label.strength.note}</p>
+        <Sentence>{label.strength.text ?? 'not known'}</Sentence>
+        <p className="type-reason text-ink2">
+          <Sentence>{label.strength.note}</Sentence>
+        </p>
         <How of="Strength on the label" how={label.strength.how} />
       </dd>
       <dt className="type-label pt-2 text-ink2">allergens and sulphite</dt>
@@ -156,7 +161,7 @@ function Facts({ label }: { label: LabelFacts }) {
         {label.allergens.text ?? 'none known'}
         {label.allergens.notes.map((note) => (
           <p key={note} className="type-reason text-ink2">
-            {note}
+            <Sentence>{note}</Sentence>
           </p>
         ))}
         <How of="Allergens" how={label.allergens.how} />

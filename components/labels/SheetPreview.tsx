@@ -15,7 +15,8 @@ const WIDEST_PX = 860;
 
 /** The sheets as they will be printed: the file itself, drawn here, so that a phone without a reader shows it too. */
 export function SheetPreview({ url, title }: { url: string; title: string }) {
-  const [pdf, setPdf] = useState<PDFDocumentProxy | null>(null);
+  const [drawn, setDrawn] = useState<{ pdf: PDFDocumentProxy; url: string } | null>(null);
+  const pdf = drawn?.pdf ?? null;
   const [wrong, setWrong] = useState<string | null>(null);
   const [attempt, setAttempt] = useState(0);
   const frame = useRef<HTMLDivElement>(null);
@@ -28,7 +29,7 @@ export function SheetPreview({ url, title }: { url: string; title: string }) {
         (opened) => {
           if (abort.signal.aborted) return void opened.destroy();
           setWrong(null);
-          setPdf(opened);
+          setDrawn({ pdf: opened, url });
         },
         (error: unknown) => {
           if (!abort.signal.aborted) setWrong(error instanceof Error ? error.message : 'The sheet did not load.');
@@ -52,6 +53,11 @@ export function SheetPreview({ url, title }: { url: string; title: string }) {
         </div>
       )}
       {!pdf && !wrong && <Haze height={560} label="Drawing the sheet" className="w-full max-w-[860px]" />}
+      {drawn && (
+        <p role="status" className="type-label min-h-[18px] text-ink2">
+          {drawn.url !== url && !wrong ? 'Not yet as asked: the sheet is drawn anew.' : ''}
+        </p>
+      )}
       {pdf && Array.from({ length: sheets }, (_, index) => <Sheet key={index} pdf={pdf} page={index + 1} width={width} label={`${title}: sheet ${index + 1} of ${pdf.numPages}`} />)}
       {pdf && pdf.numPages > sheets && <p className="type-reason text-ink2">{pdf.numPages - sheets} more in the PDF.</p>}
     </div>
