@@ -10,6 +10,7 @@ import { Button } from '@/components/ui/Button';
 import { Field, Select } from '@/components/ui/Field';
 import { Haze } from '@/components/ui/Haze';
 import { ErrorState, FormError } from '@/components/ui/Notice';
+import { OnwardIcon } from '@/components/ui/icons';
 import { Sentence } from '@/components/ui/Sentence';
 import { State } from '@/components/ui/StateMark';
 import { secondDose, startFining, useFinings } from '@/lib/client/cellarwork';
@@ -147,10 +148,13 @@ export function Finings({ batchId, volumeL, now, timeZone, mayDo }: { batchId: s
         </h3>
         <p className="type-tick py-1 text-ink2">{HAZES[0]?.source}. Law and packet go before it.</p>
         {HAZES.map((haze) => (
-          <details key={haze.cause} className="border-b">
-            <summary className="type-name-low flex min-h-11 cursor-pointer flex-wrap items-baseline gap-x-3 py-2.5 strip:min-h-9">
-              {haze.cause[0]?.toUpperCase()}
-              {haze.cause.slice(1)} <span className="type-reason font-[420] text-ink2">{haze.where}</span>
+          <details key={haze.cause} className="group border-b">
+            <summary className="flex min-h-11 cursor-pointer list-none items-center justify-between gap-3 py-2.5 strip:min-h-9 [&::-webkit-details-marker]:hidden">
+              <span className="type-name-low flex flex-wrap items-baseline gap-x-3">
+                {haze.cause[0]?.toUpperCase()}
+                {haze.cause.slice(1)} <span className="type-reason font-[420] text-ink2">{haze.where}</span>
+              </span>
+              <OnwardIcon size={14} className="shrink-0 text-ink2 transition-transform group-open:rotate-90" />
             </summary>
             <dl className="type-body grid grid-cols-[5rem_minmax(0,1fr)] gap-x-3 pb-3">
               <dt className="type-label text-ink2">test</dt>

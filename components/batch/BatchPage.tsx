@@ -147,7 +147,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
       <PhoneHead batch={batch} onSetup={actions.onSetup} meta={phoneMeta(day === null ? 'not pitched' : `day ${day}`, litres(batch.volume_l), heard === null ? null : `heard ${when(heard, now, timeZone)}`)} />
       <BatchHead batch={shown} vessel={vessel} facts={facts} actions={actions} />
       {!working && <Ended batch={shown} entries={entries ?? []} timeZone={timeZone} onReopen={actions.onSetup} className="bg-lit strip:hidden" />}
-      {working && first && <Decision row={first} vessel={vessel} when={whenOf(first, judged, now, timeZone)} done={doneAct(first, batch, open, may('entries.alter'))} onRead={onRead} mayTake={may('alerts.acknowledge')} />}
+      {working && first && <Decision row={first} vessel={vessel} when={whenOf(first, judged, now, timeZone)} done={may('entries.create') ? doneAct(first, batch, open, may('entries.alter')) : null} onRead={onRead} mayTake={may('alerts.acknowledge')} />}
       <PhoneFacts batch={shown} facts={facts} work={actions.work} />
       <div className="wide:grid wide:grid-cols-[minmax(0,1fr)_424px] wide:grid-rows-[auto_1fr]">
         <div className="wide:col-start-1 wide:row-start-1">

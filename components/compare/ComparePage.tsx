@@ -134,7 +134,7 @@ function Over({ ids }: { ids: readonly string[] }) {
 function Table({ curves, measure }: { curves: readonly Curve[]; measure: Measure }) {
   return (
     <details className="border-t px-(--margin) py-2">
-      <summary className="type-label flex min-h-11 cursor-pointer items-center text-ink2 strip:min-h-8">The same numbers as a table</summary>
+      <summary className="type-label flex min-h-11 cursor-pointer items-center text-ink2 underline decoration-rule2 underline-offset-4 strip:min-h-8">The same numbers as a table</summary>
       <div className="relative overflow-x-auto" tabIndex={0} role="group" aria-label="The curves as a table">
         <table className="type-label border-collapse">
           <thead>

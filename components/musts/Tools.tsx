@@ -9,6 +9,7 @@ import { UnitField } from '@/components/units/UnitField';
 import { amountFor, scaleToFill } from '@/lib/core/must/solve';
 import { amountText } from './amount';
 import { bodyOf, coreSheet, type SheetDraft } from './draft';
+import { unitWord } from './words';
 
 type Apply = (draft: SheetDraft, said: string) => void;
 
@@ -62,7 +63,7 @@ function Solve({ draft, onApply }: { draft: SheetDraft; onApply: Apply }) {
     if (!solved.ok) return setError(solved.sentence);
     setError(undefined);
     const next = withAmounts(draft, solved.sheet.lines);
-    onApply(next, `${chosen.ingredient.name}: ${next.lines.find((item) => item.id === line)?.amount ?? ''} ${chosen.unit === 'each' ? '' : chosen.unit}, was ${chosen.amount}.`);
+    onApply(next, `${chosen.ingredient.name}: ${next.lines.find((item) => item.id === line)?.amount ?? ''} ${unitWord(chosen.unit, chosen.ingredient)}, was ${chosen.amount}.`);
   }
 
   return (
