@@ -7,7 +7,7 @@ import { GroupBar } from '@/components/ui/Page';
 import { useBatches } from '@/lib/client/batches';
 
 const TABLES = [
-  { file: 'export.json', name: 'Archive (JSON)', says: 'All of it: musts, batches, logs, readings, lots, tastings, photos, jobs, rules. This house reads it back as it was.' },
+  { file: 'export.json', name: 'Archive (JSON)', says: 'All of it: musts, batches, logs, sensors and their readings, alerts, lots, tastings, photos, jobs, rules. This house reads it back as it was.' },
   { file: 'export/readings.csv', name: 'Readings (CSV)', says: 'What the floats measured, a line a reading.' },
   { file: 'export/log.csv', name: 'Log (CSV)', says: 'What was done and read by hand.' },
   { file: 'export/batches.csv', name: 'Batches (CSV)', says: 'Their names, dates, gravities and volumes.' },

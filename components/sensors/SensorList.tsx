@@ -33,7 +33,7 @@ function Row({ sensor, health, limits, now, timeZone }: { sensor: SensorBody; he
   const findings = health?.findings.filter((finding) => finding.of !== 'silence') ?? [];
   const { state, word } = sensorState(sensor, now, findings);
   const found = (of: SensorHealth['findings'][number]['of']) => (findings.some((finding) => finding.of === of) ? 'font-semibold text-ochre' : undefined);
-  const days = daysLeftWords(health?.battery_days ?? null);
+  const days = sensor.last && daysLeftWords(health?.battery_days ?? null);
   return (
     <li className="relative border-b border-rule px-(--margin) py-3 hover:bg-lit strip:py-0">
       <div className={`${COLUMNS} strip:min-h-[52px]`}>
@@ -74,7 +74,7 @@ function Row({ sensor, health, limits, now, timeZone }: { sensor: SensorBody; he
             <span className={found('signal')}>{linkWords(sensor.last?.signal, limits?.weak_signal_dbm)}</span>
           </Cell>
           <Cell name="cell">
-            <span className={found('battery')}>{cellWords(sensor.last?.battery)}</span>
+            <span className={sensor.last ? found('battery') : undefined}>{cellWords(sensor.last?.battery)}</span>
             {days && <span className="whitespace-nowrap text-ink2 max-strip:before:content-[',_'] strip:block">{days}</span>}
           </Cell>
           <Cell name="refused" right>
