@@ -5,6 +5,7 @@ import { neckCall } from './calls/neck';
 import { rackCall } from './calls/rack';
 import type { Scene } from './calls/scene';
 import { sensorCall } from './calls/sensor';
+import { onceSettled } from './calls/settling';
 import { stalledCall } from './calls/stalled';
 import { startedCall } from './calls/started';
 import { temperatureCall } from './calls/temperature';
@@ -94,6 +95,7 @@ function judgementOf(watch: Watch, at: Instant, hour: number, picture: boolean):
     sensor: sensorCall(scene),
     ...(hand ? callsByHand(scene, hand) : {}),
   };
+  calls.bottle = onceSettled(scene, calls.bottle);
 
   const fit = hand ? hand.fit : watch.fit();
   const og = watch.segment.effectiveOg;

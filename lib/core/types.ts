@@ -51,6 +51,8 @@ export interface BatchEvent {
   neck?: Neck | null;
   /** Foam that somebody or a probe saw. */
   foam?: Foam | null;
+  /** Of a fining: when it will have sunk. */
+  settlesAt?: Instant | null;
   /** When this became known; absent: at once. Lets the past be judged by what was known then. */
   knownAt?: Instant | null;
 }

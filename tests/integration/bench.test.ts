@@ -8,13 +8,14 @@ import { getBench } from '@/lib/services/bench/get';
 import { judge } from '@/lib/services/bench/judge';
 import { createEntry } from '@/lib/services/entries/create';
 import { createEntry as entryForm } from '@/lib/contracts/batches';
+import { createMust } from '@/lib/services/musts/create';
 import { moveBottles } from '@/lib/services/lots/move';
 import { updateLot } from '@/lib/services/lots/update';
 import { createPlace, updatePlace } from '@/lib/services/places/write';
 import { presentAssessment } from '@/lib/contracts/assessment';
 import { assess } from '@/lib/core/assess';
 import { ConflictError, ForbiddenError, InvalidError } from '@/lib/errors';
-import { beerBottle, bottleForm, ciderAt, clockAt, DAY, HOUR, isoAt, NOON, readAt, sparklingBottle, stillBottle } from '../support/cellar';
+import { aLine, aSheet, beerBottle, bottleForm, ciderAt, clockAt, DAY, HOUR, isoAt, NOON, readAt, sparklingBottle, stillBottle } from '../support/cellar';
 import { useDatabase } from '../support/database';
 import { buildMember, buildSensor, writeReadings } from '../support/factories';
 
@@ -93,6 +94,10 @@ const NOT_DONE: Array<[string, (actor: Actor) => Promise<Batch>]> = [
     const batch = await ciderAt(actor, { readDaysAgo: [] });
     for (const days of [9, 0.1]) await Entry.create({ cellarId: actor.cellarId, batchId: batch.id, kind: 'reading', at: new Date(NOON - days * DAY), gravity: 1.0, detail: { instrument: 'refractometer', brix: 5 } });
     return batch;
+  }],
+  ['is called beer, but for its yeast and its must of juice stopped high', async (actor) => {
+    const must = await createMust(actor, aSheet({ lines: [aLine('apple-juice', 4.5, 'L')] }), clockAt());
+    return ciderAt(actor, { fg: 1.012, batch: { kind: 'beer', attenuationMinPercent: 70, attenuationMaxPercent: 80, mustVersionId: must.version_id } });
   }],
   ['has no original gravity and no yeast told', (actor) => ciderAt(actor, { batch: { originalGravity: null, attenuationMinPercent: null, attenuationMaxPercent: null }, fg: 1.01 })],
 ];

@@ -1,9 +1,12 @@
 import { describe, expect, it } from 'vitest';
 import { ProbeAssignment, Sensor } from '@/db/models';
 import { ManualClock } from '@/lib/clock';
+import { finingForm, secondDoseForm } from '@/lib/contracts/family';
 import { getJudgement } from '@/lib/services/batches/get-judgement';
 import { getSurroundings, surroundingsAt } from '@/lib/services/batches/surroundings';
 import { recordMessages } from '@/lib/services/readings/record';
+import { secondDose } from '@/lib/services/finings/second';
+import { startFining } from '@/lib/services/finings/start';
 import { getSensor } from '@/lib/services/sensors/get';
 import { updateSensor } from '@/lib/services/sensors/update';
 import { useDatabase } from '../support/database';
@@ -92,5 +95,18 @@ describe('a foam probe', () => {
     await say(foam, [{ at: ago(2), temperature: 18, foam: 40 }], NOW);
     expect((await surroundingsAt(batch.id, NOW - HOUR)).events).toEqual([]);
     expect((await surroundingsAt(batch.id, NOW)).events).toMatchObject([{ kind: 'note', foam: 'cover', at: NOW - 2 * HOUR, knownAt: NOW }]);
+  });
+});
+
+describe('a fining', () => {
+  it('is known to the judgement until it has settled, the second dose counted from when it went in', async () => {
+    const brewer = await buildMember('brewer');
+    const batch = await buildBatch({ cellarId: brewer.cellarId, kind: 'cider' });
+    const at = (hours: number) => new ManualClock(NOW + hours * HOUR);
+    const given = await startFining(brewer, batch.id, finingForm.parse({ at: new Date(NOW).toISOString(), fining: 'two-part', interval_min: 60, settle_days: 4 }), at(0));
+    expect((await surroundingsAt(batch.id, NOW - HOUR)).events).toEqual([]);
+    expect((await surroundingsAt(batch.id, NOW)).events).toMatchObject([{ kind: 'note', at: NOW, settlesAt: NOW + 97 * HOUR }]);
+    await secondDose(brewer, given.id, secondDoseForm.parse({ at: new Date(NOW + 3 * HOUR).toISOString() }), at(3));
+    expect((await surroundingsAt(batch.id, NOW + 4 * HOUR)).events).toMatchObject([{ at: NOW + 3 * HOUR, settlesAt: NOW + 99 * HOUR }]);
   });
 });

@@ -48,12 +48,18 @@ export type FiningState =
   | { state: 'settling'; brightFrom: Instant }
   | { state: 'settled'; brightFrom: Instant };
 
+/** From when it should be bright; a second dose that has not gone in counts from when it is due, or from now where it is late. */
+export function brightFrom({ intervalMin, settleDays, firstAt, secondAt }: FiningRun, now: Instant): Instant {
+  const last = secondAt ?? (intervalMin === null ? firstAt : Math.max(now, firstAt + intervalMin * MINUTE));
+  return last + settleDays * DAY;
+}
+
 /** Where a fining stands now. `dueAt` is when the phone rings. */
 export function finingState(run: FiningRun, now: Instant): FiningState {
   if (run.intervalMin !== null && run.secondAt === null) {
     const dueAt = run.firstAt + run.intervalMin * MINUTE;
     return now < dueAt ? { state: 'waiting_for_second', dueAt } : { state: 'second_due', dueAt, lateMin: Math.floor((now - dueAt) / MINUTE) };
   }
-  const brightFrom = (run.secondAt ?? run.firstAt) + run.settleDays * DAY;
-  return now < brightFrom ? { state: 'settling', brightFrom } : { state: 'settled', brightFrom };
+  const bright = brightFrom(run, now);
+  return { state: now < bright ? 'settling' : 'settled', brightFrom: bright };
 }

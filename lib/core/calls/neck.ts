@@ -1,4 +1,4 @@
-import type { Call, Evidence } from '../types';
+import type { Call, Evidence, Foam } from '../types';
 import { gasLPerH } from '../gas/gas';
 import { foamSeen, standsHigh, type SeenFoam } from './foam';
 import { later, sinceOf, when, type Scene } from './scene';
@@ -32,7 +32,7 @@ export function neckCall(scene: Scene): Call {
   if (watch.airlock.on) {
     if (standsHigh(foam)) return leaveOn(scene, foam, gas ? `Gas is low, ${gasWords(gas.value)}.` : null, figures);
     const since = sinceOf(scene, watch.airlock.since);
-    return call('yes', `Swap tube for airlock: from ${since === null ? 'now' : when(scene, since)}.`, gas ? `Krausen falling; gas ${gasWords(gas.value)}, under ${gasWords(limit)}.` : blindly(scene), {
+    return call('yes', `Swap tube for airlock: from ${since === null ? 'now' : when(scene, since)}.`, gas ? `${krausenWords(scene, foam)}; gas ${gasWords(gas.value)}, under ${gasWords(limit)}.` : blindly(scene, foam), {
       since,
       evidence: figures,
       act: gas ? 'Swap the tube for an airlock with water in it.' : 'Look at the foam, then swap the tube for an airlock with water in it.',
@@ -48,23 +48,33 @@ export function neckCall(scene: Scene): Call {
   const expected = watch.peaked.on ? hoursToSwap(scene, limit) : null;
   if (expected !== null && expected < 72) {
     const at = later(scene, expected);
-    return call('soon', `Swap tube for airlock: from ${when(scene, at)}.`, `Krausen falling; gas ${gasWords(gas.value)}, under ${gasWords(limit)} by then.`, { expectedAt: at, evidence: figures, changesIt });
+    return call('soon', `Swap tube for airlock: from ${when(scene, at)}.`, `${krausenWords(scene, foam)}; gas ${gasWords(gas.value)}, under ${gasWords(limit)} by then.`, { expectedAt: at, evidence: figures, changesIt });
   }
-  return call('hold', 'Leave the tube on.', watch.peaked.on ? `Gas ${gasWords(gas.value)}; an airlock is safe under ${gasWords(limit)}.` : `Krausen still building; gas ${gasWords(gas.value)}.`, {
+  return call('hold', 'Leave the tube on.', watch.peaked.on ? `Gas ${gasWords(gas.value)}; an airlock is safe under ${gasWords(limit)}.` : `${foam ? seenWords(scene, foam) : 'Krausen still building'}; gas ${gasWords(gas.value)}.`, {
     since: sinceOf(scene, watch.started.since),
     evidence: figures,
     changesIt,
   });
 }
 
-const foamWords = (scene: Scene, foam: SeenFoam): string => `Foam ${foam.foam === 'at_neck' ? 'stood at the neck' : 'covered the drink'} ${when(scene, foam.at)}.`;
+const SEEN: Record<Foam, string> = { none: 'No foam was seen', ring: 'A ring of foam stood', cover: 'Foam covered the drink', at_neck: 'Foam stood at the neck' };
+
+const seenWords = (scene: Scene, foam: SeenFoam): string => `${SEEN[foam.foam]} ${when(scene, foam.at)}`;
+
+/** The gas tells what the krausen does only where nobody and no probe has looked at it. */
+const krausenWords = (scene: Scene, foam: SeenFoam | null): string => (foam ? seenWords(scene, foam) : 'Krausen falling');
+
+const foamWords = (scene: Scene, foam: SeenFoam): string => `${seenWords(scene, foam)}.`;
 
 /** What would be time to swap, were there not foam that could reach an airlock. */
 export const leaveOn = (scene: Scene, foam: SeenFoam, gas: string | null, figures: readonly Evidence[]): Call =>
   call('hold', 'Leave the tube on: foam stands high.', [foamWords(scene, foam), gas].filter(Boolean).join(' '), { since: foam.at, evidence: figures, act: 'Look at the foam again tomorrow.', changesIt: 'Changes it: foam down to a ring.' });
 
 /** The float gives no gas figure now: what it gave before says that the gas is low. */
-const blindly = ({ watch }: Scene): string => `Krausen falling, by what the sensor gave before it ${watch.frozen ? 'stuck' : 'fell silent'}.`;
+const blindly = (scene: Scene, foam: SeenFoam | null): string => {
+  const before = `by what the sensor gave before it ${scene.watch.frozen ? 'stuck' : 'fell silent'}`;
+  return foam ? `${seenWords(scene, foam)}; gas is low ${before}.` : `Krausen falling, ${before}.`;
+};
 
 /** Hours until the curve's gas is under the limit, with the nine hours it must stay there; null without a curve. */
 function hoursToSwap(scene: Scene, limit: number): number | null {

@@ -1,4 +1,5 @@
 import type { MustLine } from '../must/ingredients';
+import type { DrinkKind } from '../types';
 import { bring, inputsOf } from '../must/line';
 import { FROM_KIND, type Makeup, type SugarFrom } from './kind';
 
@@ -31,4 +32,16 @@ export function makeupOf(lines: readonly MustLine[], abvPercent: number): Makeup
     }).extractG;
   }
   return { from, spiced: lines.some(({ ingredient }) => ingredient.kind === 'spice'), abvPercent };
+}
+
+/**
+ * The kind to judge by how far a drink may ferment. Only malt leaves dextrins: what
+ * is called beer, and by its must has less than half of its sugar from malt, may
+ * end as dry as honey or fruit.
+ */
+export function kindByMust(kind: DrinkKind, lines: readonly MustLine[]): DrinkKind {
+  const { from } = makeupOf(lines, 0);
+  const total = Object.values(from).reduce((sum, grams) => sum + grams, 0);
+  if (kind !== 'beer' || total === 0 || from.malt >= total / 2) return kind;
+  return from.honey >= total / 2 ? 'mead' : 'wine';
 }

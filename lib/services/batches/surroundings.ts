@@ -1,10 +1,11 @@
-import type { Transaction } from 'sequelize';
-import { Batch } from '@/db/models';
+import { Op, type Transaction } from 'sequelize';
+import { Batch, FiningRun } from '@/db/models';
 import { probesOf, type ProbeRow } from '@/db/queries/surroundings';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
 import type { SurroundingsBody } from '@/lib/contracts/surroundings';
+import { brightFrom } from '@/lib/core/additions/fining';
 import { foamOf } from '@/lib/core/calls/foam';
 import type { BatchEvent, Instant } from '@/lib/core/types';
 import { NotFoundError } from '@/lib/errors';
@@ -12,7 +13,7 @@ import { NotFoundError } from '@/lib/errors';
 /** What the judgement takes from the probes around a batch. */
 export interface Surroundings {
   roomC: number | null;
-  /** Foam that a probe sees, as if somebody had looked and written it down. */
+  /** Foam that a probe sees, as if somebody had looked and written it down; finings, with when they will have sunk. */
   events: readonly BatchEvent[];
 }
 
@@ -29,7 +30,16 @@ function roomOf(probes: readonly ProbeRow[]): number | null {
 export async function surroundingsAt(batchId: string, at: Instant, transaction?: Transaction): Promise<Surroundings> {
   const probes = await probesOf(batchId, at, transaction);
   const events = probes.flatMap(({ foamMm, at: seen, receivedAt }): BatchEvent[] => (foamMm === null || seen === null ? [] : [{ at: Math.round(seen), kind: 'note', foam: foamOf(foamMm), knownAt: receivedAt === null ? null : Math.round(receivedAt) }]));
-  return { roomC: roomOf(probes), events };
+  return { roomC: roomOf(probes), events: [...events, ...(await finingsOf(batchId, at, transaction))] };
+}
+
+/** Finings given by a time, as notes that tell when they will have sunk. */
+async function finingsOf(batchId: string, at: Instant, transaction?: Transaction): Promise<BatchEvent[]> {
+  const runs = await FiningRun.findAll({ where: { batchId, firstAt: { [Op.lte]: new Date(at) } }, transaction });
+  return runs.map(({ intervalMin, settleDays, firstAt, secondAt }) => {
+    const second = secondAt !== null && secondAt.getTime() <= at ? secondAt.getTime() : null;
+    return { at: second ?? firstAt.getTime(), kind: 'note', settlesAt: brightFrom({ intervalMin, settleDays, firstAt: firstAt.getTime(), secondAt: second }, at) };
+  });
 }
 
 const iso = (at: number | null) => (at === null ? null : new Date(at).toISOString());

@@ -6,10 +6,12 @@ import { checkDone, type DoneCheck } from '@/lib/core/bottling/done';
 import { drinkForGas } from '@/lib/core/bottling/drink';
 import type { DrinkForGas } from '@/lib/core/bottling/co2';
 import { primingSugar, syrup } from '@/lib/core/bottling/priming';
+import { kindByMust } from '@/lib/core/naming/makeup';
 import { pointsOf } from '@/lib/core/units/convert';
 import { InvalidError } from '@/lib/errors';
 import { detailOf } from '../drink/ledger';
 import type { DrinkState } from '../drink/state';
+import { sheetOf } from '../musts/sheet';
 
 const HOUR = 3_600_000;
 /** A float's rate of fall says nothing when it is older. */
@@ -26,8 +28,10 @@ export function doneCheck(state: DrinkState): DoneCheck {
   const { batch, at, ledger, makeup, assessment } = state;
   const floatAt = assessment?.last_reading_at ? Date.parse(assessment.last_reading_at) : null;
   const fresh = floatAt !== null && at.getTime() - floatAt < FLOAT_FRESH_MS;
+  const sheet = state.stories.of.get(batch.id)?.sheet ?? null;
   return checkDone({
-    kind: batch.kind,
+    // A name must not widen what counts as done.
+    kind: sheet ? kindByMust(batch.kind, sheetOf(sheet).lines) : batch.kind,
     at: at.getTime(),
     pitchedAt: batch.pitchedAt?.getTime() ?? null,
     originalGravity: ledger.effectiveOg,

@@ -2,7 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
 import { acidDose, tanninDose } from '@/lib/core/additions/acid';
 import { asSugar, effectOf, sugarForPoints } from '@/lib/core/additions/effect';
-import { FININGS, finingState } from '@/lib/core/additions/fining';
+import { brightFrom, FININGS, finingState } from '@/lib/core/additions/fining';
 import { HAZES } from '@/lib/core/additions/haze';
 import { nutrientPlan, PORTIONS_AT, sugarUsedShare, type NutrientInput } from '@/lib/core/additions/nutrients';
 import { contentsOf } from '@/lib/core/family/contents';
@@ -131,6 +131,12 @@ describe('finings', () => {
     const both = { ...run, secondAt: minutes(300) };
     expect(finingState(both, minutes(301))).toEqual({ state: 'settling', brightFrom: minutes(300) + 5 * 86_400_000 });
     expect(finingState(both, minutes(300) + 5 * 86_400_000)).toMatchObject({ state: 'settled' });
+  });
+
+  test('while the second dose is out, it is bright so many days after it is due, or after now where it is late', () => {
+    expect(brightFrom(run, minutes(5))).toBe(minutes(60) + 5 * 86_400_000);
+    expect(brightFrom(run, minutes(90))).toBe(minutes(90) + 5 * 86_400_000);
+    expect(brightFrom({ ...run, intervalMin: null }, minutes(90))).toBe(at + 5 * 86_400_000);
   });
 
   test('finings in one part settle from it', () => {

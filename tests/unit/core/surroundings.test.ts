@@ -33,6 +33,15 @@ describe('foam', () => {
     expect(callsAt(13, seen('cover', 25)).neck.verdict).toBe('yes');
   });
 
+  it('is named as it was seen: what the krausen does is not told from the gas while somebody or a probe looks at it', () => {
+    expect(callsAt(13, {}).neck.reason).toContain('Krausen falling; gas');
+    expect(callsAt(13, seen('ring', 2)).neck.reason).toMatch(/^A ring of foam stood Thu 16:00; gas/);
+    expect(callsAt(13, seen('none', 2)).neck.reason).toMatch(/^No foam was seen Thu 16:00; gas/);
+    for (const day of [2, 3, 4, 5, 6, 7, 8]) {
+      for (const foam of ['ring', 'cover'] as const) expect(callsAt(day, seen(foam, 2, day)).neck.reason).not.toContain('Krausen');
+    }
+  });
+
   it('asks for the tube back where it has reached an airlock', () => {
     expect(callsAt(13, { ...seen('at_neck', 1), neck: 'airlock' }).neck).toMatchObject({ verdict: 'hold', act: 'Put the blow-off tube back on.' });
     expect(callsAt(13, { ...seen('cover', 1), neck: 'airlock' }).neck.verdict).toBe('no');
@@ -65,5 +74,23 @@ describe('the room', () => {
   it('changes no verdict and no word where nobody measured it', () => {
     expect(callsAt(3, { roomC: null })).toEqual(callsAt(3, {}));
     expect(callsAt(3, { roomC: 10 }).temperature.verdict).toBe('no');
+  });
+});
+
+describe('a fining', () => {
+  const fined = (hoursAgo: number, days: number, day = 30) => ({ events: [{ at: PITCH + day * DAY - hoursAgo * HOUR, kind: 'note' as const, settlesAt: PITCH + day * DAY + (days * 24 - hoursAgo) * HOUR }] });
+
+  it('that still falls makes the bottles wait until it has settled, and no longer', () => {
+    const { bottle } = callsAt(30, {});
+    expect(bottle.verdict).toBe('yes');
+    const waiting = callsAt(30, fined(24, 5)).bottle;
+    expect(waiting).toMatchObject({ verdict: 'soon', expectedAt: PITCH + 34 * DAY, headline: 'Bottling: wait until it has settled, Thu 18:00.' });
+    expect(waiting.evidence).toEqual(bottle.evidence);
+    expect(callsAt(30, fined(121, 5)).bottle).toMatchObject({ verdict: 'yes' });
+    expect(callsAt(30, fined(-1, 5)).bottle).toMatchObject({ verdict: 'yes' });
+  });
+
+  it('changes nothing of a batch that is not ready anyway', () => {
+    expect(callsAt(6, fined(24, 5, 6)).bottle).toEqual(callsAt(6, {}).bottle);
   });
 });

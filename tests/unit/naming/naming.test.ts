@@ -1,7 +1,7 @@
 import { describe, expect, test } from 'vitest';
 import { suggestName, type SugarFrom } from '@/lib/core/naming/kind';
 import { allergenLine, strengthLine } from '@/lib/core/naming/label';
-import { makeupOf } from '@/lib/core/naming/makeup';
+import { kindByMust, makeupOf } from '@/lib/core/naming/makeup';
 import { exactly } from '@/lib/core/units/range';
 import { line } from '../../support/must';
 
@@ -56,6 +56,14 @@ describe('the name of a drink', () => {
     expect(makeup.from.pear).toBeCloseTo(4 * 0.1225 * 1047.6, -1);
     expect(makeup.from.grape).toBeGreaterThan(30);
     expect(makeup.from.apple).toBe(0);
+  });
+
+  test('what is called beer is judged as one only where malt brings half of its sugar', () => {
+    const juice = line('pear-juice', 4, 'L');
+    expect(kindByMust('beer', [juice])).toBe('wine');
+    expect(kindByMust('beer', [line('honey', 1, 'kg'), juice])).toBe('mead');
+    expect(kindByMust('beer', [])).toBe('beer');
+    expect(kindByMust('cider', [juice])).toBe('cider');
   });
 });
 
