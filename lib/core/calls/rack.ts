@@ -13,13 +13,24 @@ export function rackCall(scene: Scene): Call {
   const figures = level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG'), ...(rate ? [evidence('fall', Math.max(0, rate.value), RACK_PACE, 'points/d')] : [])];
   const changesIt = `Changes it: ${gravityWords(top)} or less and about 2 points still to come.`;
   if (!watch.started.on) return call(scene.silentH === null ? 'unknown' : 'no', 'Not yet: it has not started.', 'Racking comes at the end of the fall.', { changesIt });
-  if (watch.rack.on && level !== null) {
+  const blind = watch.frozen !== null || scene.silent || level === null;
+  if (watch.rack.on) {
     const since = sinceOf(scene, watch.rack.since);
+    const words = level === null ? '' : `${gravityWords(level)}, ${rate ? rateWords(rate.value) : 'hardly falling'}.`;
     const racked = scene.watch.setup.events.findLast((event) => event.kind === 'rack' && event.at <= scene.at)?.at ?? null;
     if (racked !== null && since !== null && racked >= since - RACKED_LATELY_MS) {
-      return call('no', `Racked ${when(scene, racked)}.`, `${gravityWords(level)}, ${rate ? rateWords(rate.value) : 'hardly falling'}. It clears on its own now.`, { since: racked, evidence: figures });
+      return call('no', `Racked ${when(scene, racked)}.`, `${words} It clears on its own now.`.trimStart(), { since: racked, evidence: figures });
     }
-    return call('yes', `May be racked: since ${since === null ? 'now' : when(scene, since)}.`, `${gravityWords(level)}, ${rate ? rateWords(rate.value) : 'hardly falling'}.`, {
+    const headline = `May be racked: since ${since === null ? 'now' : when(scene, since)}.`;
+    if (blind) {
+      return call('yes', headline, `By what the sensor gave before it ${watch.frozen ? 'stuck' : 'fell silent'}.`, {
+        since,
+        evidence: figures,
+        act: `Read by hand first: rack it at ${gravityWords(top)} or less.`,
+        changesIt: `Changes it: a reading above ${gravityWords(top)}.`,
+      });
+    }
+    return call('yes', headline, words, {
       since,
       evidence: figures,
       act: 'Rack off the lees when it suits; full to the neck, airlock on.',
@@ -27,7 +38,7 @@ export function rackCall(scene: Scene): Call {
     });
   }
   if (watch.stuck.on && level !== null) return call('no', 'Not yet: it has stopped early.', `${gravityWords(level)}; racking takes yeast away that is still needed.`, { evidence: figures, changesIt });
-  if (watch.frozen || scene.silent || level === null) return call('unknown', 'Not known.', 'The sensor gives nothing to go by.', { act: 'Read by hand.', changesIt });
+  if (blind) return call('unknown', 'Not known.', 'The sensor gives nothing to go by.', { act: 'Read by hand.', changesIt });
   const hours = hoursToRack(scene);
   const expectedAt = hours === null ? null : later(scene, hours);
   const left = (watch.remainingNow()?.value ?? null);

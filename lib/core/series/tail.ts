@@ -11,15 +11,22 @@ export interface Tail {
   pace: number;
 }
 
-/** Pace times age of a tail, log-normal about 6 (own simulations: 4 to 12, one in ten outside), our own prior. */
-const PACE_MEDIAN = 6;
+/** Spread of the logarithm of a tail's pace about what its age lets expect (two families of own simulations), our own prior. */
 const PACE_SPREAD = 0.6;
 /** Paces tried, as multiples of 1/age, about evenly spaced in the logarithm. Each pair is twice the pair before, so that its exponentials are the squares of theirs. */
-const PACES = [1, 1.5, 2, 3, 4, 6, 8, 12, 16, 24];
+const PACES = [0.75, 1, 1.5, 2, 3, 4, 6, 8, 12, 16, 24];
 /** Exponents are cut here, so that their squares stay numbers. */
 const STEEPEST = 30;
 /** Noise that hangs together over hours leaves fewer independent bins than there are. */
 const CORRELATION_MOST = 0.9;
+/** Middle of pace times age: to day 25, and at the least; between the two it falls as the age grows (the middles of two families of own simulations lie within a half of it). */
+const USUAL_PACE = { quick: 6, untilDay: 25, slow: 3.3 };
+
+/** Pace times age to expect of an end: what took long to get here is held back by its alcohol and its tired yeast, and slows down slower still. */
+export function usualPace(ageDays: number): number {
+  const { quick, untilDay, slow } = USUAL_PACE;
+  return Math.max(slow, Math.min(quick, (quick * untilDay) / ageDays));
+}
 
 let size = 256;
 let weights = new Float64Array(size);
@@ -78,12 +85,13 @@ export function fitTail(t: Float64Array, g: Float64Array, from: number, to: numb
     even = new Float64Array(size);
     odd = new Float64Array(size);
   }
+  const median = usualPace(ageDays);
   weights.fill(1, 0, n);
   let sigma = 0.3;
   let rho = 0;
   // Weights against bubbles from the middle pace; the shape matters little for them.
   for (let round = 0; round < 3; round += 1) {
-    setBasis(t, from, n, now, PACE_MEDIAN / ageDays, basis);
+    setBasis(t, from, n, now, median / ageDays, basis);
     const fit = solve(g, from, n);
     if (!fit) return null;
     for (let i = 0; i < n; i += 1) {
@@ -129,7 +137,7 @@ export function fitTail(t: Float64Array, g: Float64Array, from: number, to: numb
       const r = g[from + i]! - fit.a - fit.b * basis[i]!;
       sum += weights[i]! * r * r;
     }
-    const z = Math.log(multiple / PACE_MEDIAN) / PACE_SPREAD;
+    const z = Math.log(multiple / median) / PACE_SPREAD;
     const cost = sum / (2 * variance) + (z * z) / 2;
     best = Math.min(best, cost);
     found.push({ b: fit.b, v: variance * fit.bb, cost, lambda });

@@ -126,6 +126,13 @@ export class Track {
     return null;
   }
 
+  /** Hour of the last bin before `hour` that is sound; the pitch where there is none. */
+  lastSound(hour: number): number {
+    const { bins } = this;
+    for (let i = this.upTo(hour) - 1; i >= 0; i -= 1) if (!bins.masked[i]) return bins.t[i]!;
+    return 0;
+  }
+
   /** Robust line over [from, to) h, frozen stretches left out. Null when less than `cover` of it has data. */
   line(from: number, to: number, cover = 0.6): Line | null {
     const kept = this.gather(from, to, cover);

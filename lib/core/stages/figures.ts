@@ -230,8 +230,10 @@ export class Figures {
     const now = Math.floor(this.lookedAt / TAIL_H + 1e-9) * TAIL_H;
     if (cache?.at === now) return cache;
     const { from, restarted } = this.segment;
-    const age = restarted ? Math.max(72, now - from) : now;
-    return { at: now, tail: this.track.tail(Math.max(96, Math.min(mostH, share * age)), restarted ? from + 24 : 0, now, age) };
+    const own = restarted ? Math.max(72, now - from) : now;
+    // A yeast that was fed at work is as tired as the whole batch is old, and its sugar as young as the feed; one that had come to rest begins anew.
+    const age = restarted && !this.sweetened ? Math.sqrt(own * now) : own;
+    return { at: now, tail: this.track.tail(Math.max(96, Math.min(mostH, share * own)), restarted ? from + 24 : 0, now, age) };
   }
 
   /** The tail where the fall is near its end; null before, when it takes a steady fall for the whole of it. */
@@ -265,12 +267,12 @@ export class Figures {
     return fit && remaining(level - fit.parameters[1]!, Math.hypot(fit.fgSd, SHAPE_SD));
   }
 
-  /** A tail held against what the yeast's range leaves to be had. */
+  /** A tail held against what the yeast's range leaves to be had. A level below the range has shown the range wrong: it cannot say that less than nothing is left. */
   protected againstRange(level: number, tail: Tail): Remaining {
     const prior = this.fgPrior();
     const both = held(
       { value: tail.remaining, sd: Math.hypot(tail.sd, 0.2) },
-      { value: level - prior.mean, sd: Math.hypot(prior.sd, this.track.calibrationSd(level)) },
+      { value: Math.max(0, level - prior.mean), sd: Math.hypot(prior.sd, this.track.calibrationSd(level)) },
     );
     return remaining(both.value, both.sd);
   }

@@ -11,7 +11,7 @@ interface Known {
 }
 
 /** Share of the fall, by the curve, from which the tail tells of what is left (own simulations). */
-const TAIL_SHOWS_END_FROM = 0.8;
+const TAIL_SHOWS_END_FROM = 0.85;
 
 export const remaining = (value: number, sd: number): Remaining => ({ value, sd, most: value + 1.28 * sd });
 

@@ -1,15 +1,17 @@
 import type { BatchSetup, Reading } from '../types';
-import { gasLPerH } from '../gas/gas';
+import { VOLUMES_PER_POINT } from '../gas/gas';
 import type { Line } from '../series/line';
-import { Intake } from './intake';
+import { CURVE_PAST_DAYS, Peak } from './peak';
 import { hold } from './latch';
 
 export { LOOK_H } from './intake';
 
 /** Points that may still come, nine times in ten, when a batch may be racked, when it is called finished, and when it may be bottled. */
-export const RACK_POINTS = 4.4;
-export const TERMINAL_POINTS = 1.6;
-export const BOTTLE_POINTS = 1;
+export const RACK_POINTS = 4.8;
+export const TERMINAL_POINTS = 1.9;
+export const BOTTLE_POINTS = 1.2;
+/** Points left by the curve alone, at half its pace, when a batch may be racked whose float gives nothing (ours). */
+const RACK_BLIND_POINTS = 2.5;
 /** Fall, points a day, under which it may be racked. */
 export const RACK_PACE = 3;
 /** Hours after the pitch at which a start is overdue. */
@@ -19,28 +21,23 @@ export const OVERDUE_H: Record<BatchSetup['kind'], number> = { beer: 48, cider: 
 const REST_LOOK_H = 12;
 const REST_POINTS = 0.8;
 
-/** Hours of rest after which a level a little above the yeast's range is taken for the end (ours). */
-const RESTS_H = 72;
-
-/** Thermal days past the steepest place of the curve at which the peak is over by the curve alone, and at which it is where the record agrees (own simulations). */
-const CURVE_PAST_DAYS = 0.4;
-const LINE_PAST_DAYS = 0.15;
-/** By how much the gas may be more than the curve says, once the peak is over (own simulations: nine in ten below 1.3 times). */
-const CURVE_GAS_ROOM = 1.5;
+/** Most fall of two days, points a day and nine times in ten, at which it may have ended, and at which it may be bottled where both tails say so (ours). */
+const TERMINAL_PACE = 0.9;
+const BOTTLE_PACE = 0.7;
+/** Fall over three days, points a day, under which they count as quiet: less than a hydrometer shows, a point in all (the trade's readings three days apart). */
+const QUIET_PACE = 1 / 3;
 
 /** Share of what the curve says is left that counts against the yeast's range (ours): early it may see too much. */
 const CURVE_SURE = 0.75;
 
-/** Hours that a cold vessel may need to work as it could, once it is warm again (ours). */
-const WARMING_H = 60;
+/** Points below the lowest level of a stall at which one is over: a level at the limit must not flicker (dead band as in ANSI/ISA-18.2; its width is ours). */
+const STUCK_BAND = 1;
 
 /** The rules, one look every three hours: what turns each statement on, and what turns it off again. */
-export class Watch extends Intake {
+export class Watch extends Peak {
   private noise = 0.5;
-  /** Hour of the last look at which it was cold. */
-  private lastCold: number | null = null;
-  /** Hour since which it has been cold, with no warm days between. */
-  private coldSince = 0;
+  /** Looks in a row at which a stuck batch seemed to fall within hours. */
+  private stirs = 0;
   /** Level at the last judgement, points, of a batch that was ready for bottles. */
   private restLevel: number | null = null;
 
@@ -76,6 +73,7 @@ export class Watch extends Intake {
       this.judgePeak(hour);
       this.judgeAirlock(hour);
     }
+    if (this.started.on && !this.rack.on && this.isBlind()) this.judgeRackBlind(hour);
     const day = this.line(48);
     hold(this.rising, hour, day !== null && day.slope - 1.64 * day.se > 0.25, 2, day !== null && day.slope - 1.64 * day.se <= 0);
     const settled = this.quietSinceAddition(48, 240);
@@ -84,18 +82,6 @@ export class Watch extends Intake {
       hold(this.drifting, hour, true, 1, false);
     }
     this.restLevel = this.bottle.on ? this.track.level(hour - 6, hour) : null;
-  }
-
-  private noteCold(hour: number): void {
-    if (!this.started.on || !this.coldNow()) return;
-    if (this.lastCold === null || hour - this.lastCold > WARMING_H) this.coldSince = hour;
-    this.lastCold = hour;
-  }
-
-  /** It is cold, or was lately, and had not come to its end before: what rests may only wait for warmth. */
-  mayOnlyBeCold(): boolean {
-    if (this.lastCold === null || this.lookedAt - this.lastCold > WARMING_H) return false;
-    return !this.terminal.on || this.terminal.since === null || this.terminal.since > this.coldSince;
   }
 
   private judgeStart(hour: number): void {
@@ -122,73 +108,6 @@ export class Watch extends Intake {
     hold(this.overdue, hour, hour >= OVERDUE_H[this.setup.kind] && fall < 2.5 && !this.started.on, 1, this.started.on);
   }
 
-  private judgePeak(hour: number): void {
-    if (this.peaked.on) return;
-    let below = false;
-    let plain = false;
-    for (const window of [12, 18, 24, 36]) {
-      const line = this.line(window);
-      if (!line) continue;
-      const rate = -line.slope;
-      const most = this.maxRates.get(window);
-      if (rate > 1 && (!most || rate > most.rate)) this.maxRates.set(window, { rate, se: line.se });
-      else if (most) {
-        const fallen = most.rate - rate;
-        const doubt = Math.hypot(line.se, most.se);
-        below ||= fallen > Math.max(0.06 * most.rate, 1.15 * doubt);
-        plain ||= fallen > Math.max(0.2 * most.rate, 2.5 * doubt);
-      }
-      if (window === 24 && rate > this.maxRate) this.maxRate = rate;
-    }
-    const passed = this.pastCurvePeak();
-    // Where the record is plain the curve is not asked: a late start can put its turn too late.
-    const seen = plain || (passed === null ? below : passed > CURVE_PAST_DAYS || (below && passed > LINE_PAST_DAYS));
-    // A drift or the first small fall has no peak.
-    hold(this.peaked, hour, seen && this.progress() >= 0.12, 2, false);
-  }
-
-  /** Thermal days since the steepest place of the fitted curve; null without a curve, or where it says that hardly anything has fallen. */
-  private pastCurvePeak(): number | null {
-    const fit = this.fit();
-    if (!fit) return null;
-    const tau = this.track.tauAt(this.lookedAt) - this.track.tauAt(this.segment.from);
-    const passed = tau - fit.curve.peakTau(tau);
-    return passed > 0 && fit.curve.share(tau) > 0.85 ? 0 : passed;
-  }
-
-  /** Gas now by the fitted curve with room for its error, L/h: what is gone by while the float gives nothing. */
-  private gasByCurve(): number {
-    const fit = this.fit();
-    const passed = this.pastCurvePeak();
-    if (!fit || passed === null || passed < CURVE_PAST_DAYS) return Number.POSITIVE_INFINITY;
-    const tau = this.track.tauAt(this.lookedAt) - this.track.tauAt(this.segment.from);
-    return CURVE_GAS_ROOM * gasLPerH(fit.curve.rate(tau) * this.track.warmthAt(this.lookedAt), this.setup.volumeL);
-  }
-
-  private judgeAirlock(hour: number): void {
-    if (!this.peaked.on || (this.airlock.on && this.terminal.on)) return;
-    // Any window bounds the present rate from above while it falls; the sharpest one wins.
-    let upper = Number.POSITIVE_INFINITY;
-    let lower = Number.NEGATIVE_INFINITY;
-    // Once it is on, only its release is asked for.
-    for (const window of this.airlock.on ? [12] : [12, 18, 24]) {
-      const line = this.line(window);
-      if (!line) continue;
-      if (line.slope > 1.5) continue;
-      upper = Math.min(upper, gasLPerH(-line.slope + 1.15 * line.se, this.setup.volumeL));
-      if (window === 12 || lower === Number.NEGATIVE_INFINITY) lower = gasLPerH(-line.slope - 1.64 * line.se, this.setup.volumeL);
-    }
-    // A float that is stuck or silent leaves what it told before.
-    const blind = this.frozen !== null || upper === Number.POSITIVE_INFINITY;
-    if (blind) upper = this.gasByCurve();
-    const limit = this.swapGas();
-    // A cold vessel with sugar left is quiet only until somebody warms it.
-    const waiting = this.lastCold !== null && hour - this.lastCold < WARMING_H && this.gasIfWarmed() > limit;
-    // Fresh sugar is not at its strongest at once, and yeast that had come to rest wakes slowly.
-    const settled = this.quietSinceAddition(this.sweetened ? 72 : 24, 72);
-    hold(this.airlock, hour, upper < limit && settled && !waiting, 3, lower > 1.3 * limit || waiting);
-  }
-
   private noteLowest(): void {
     const line = this.line(24);
     const level = this.levelNow();
@@ -205,29 +124,31 @@ export class Watch extends Intake {
     const upper48 = line48 ? -line48.slope + 1.28 * line48.se : null;
     const ground = this.groundLevel();
     const inside = ground !== null && ground <= this.zoneTop() && this.peaked.on;
+    // A level that would not be called stuck may be the end: the yeast's range is often a little wrong.
+    const near = ground !== null && ground <= this.stuckFloor() && this.peaked.on;
     // The tail is only asked where the fall is slow enough for it to matter.
-    const ceiling = !this.terminal.on ? 0.9 : !this.bottle.on ? 0.5 : 0;
-    const slow = (inside || this.restsAbove()) && upper48 !== null && upper48 < ceiling;
-    const left = slow && this.tail() ? this.remainingNow() : null;
+    const ceiling = this.bottle.on ? Number.POSITIVE_INFINITY : this.terminal.on ? BOTTLE_PACE : TERMINAL_PACE;
+    const slow = (inside || (near && !this.coldNow())) && upper48 !== null && upper48 < ceiling;
+    const left = slow ? this.remainingNow() : null;
     const most = left && left.most;
 
     const sugary = level !== null && this.sweetStill(level);
-    const done = most !== null && most < TERMINAL_POINTS && upper48! < 0.9 && this.quietSinceAddition(60, 120) && !sugary;
+    const done = most !== null && most < TERMINAL_POINTS && upper48! < TERMINAL_PACE && this.quietSinceAddition(60, 120) && !sugary;
     const wasDone = this.terminal.on;
-    hold(this.terminal, hour, done, 2, (lower48 !== null && lower48 > 0.8) || this.refermenting.on);
+    hold(this.terminal, hour, done, 1, (lower48 !== null && lower48 > 0.8) || this.refermenting.on);
     if (this.terminal.on && !wasDone) this.plateau = level;
 
     if (this.terminal.on) hold(this.rack, hour, true, 2, false);
-    else {
+    else if (!this.isBlind()) {
       const line12 = this.line(12) ?? line24;
       const paces = [line12, line24].flatMap((line) => (line ? [-line.slope] : []));
-      const asked = inside && !sugary && this.quietSinceAddition(60, 120) && Math.min(...paces) < RACK_PACE;
+      const asked = near && !sugary && this.quietSinceAddition(60, 120) && Math.min(...paces) < RACK_PACE;
       const left = asked ? this.leftOnCurve() : null;
       hold(this.rack, hour, left !== null && left.most < RACK_POINTS, 2, line12 !== null && -line12.slope - 1.64 * line12.se > RACK_PACE);
     }
 
     // Both ends must say so: the shorter sees a late fall, the longer is seldom deceived.
-    const rest = most !== null && most < BOTTLE_POINTS && inside && upper48! < 0.5 && this.threeQuietDays() ? this.longTail() : null;
+    const rest = most !== null && most < BOTTLE_POINTS && inside && this.tail() && upper48! < BOTTLE_PACE && this.threeQuietDays() ? this.longTail() : null;
     const still =
       rest !== null &&
       level !== null &&
@@ -237,21 +158,32 @@ export class Watch extends Intake {
       !sugary &&
       !this.mayOnlyBeCold() &&
       this.quietSinceAddition(120, 168);
-    hold(this.bottle, hour, still, 4, (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on);
+    // A steady small fall shows in what it leaves to come, a whole volume of gas, before two days of it are beyond doubt.
+    const more = most !== null && most * VOLUMES_PER_POINT >= 1;
+    hold(this.bottle, hour, still, 2, more || (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on);
   }
 
+  /** The float is stuck or silent. */
+  private isBlind(): boolean {
+    return this.frozen !== null || this.lookedAt - this.track.lastSound(this.lookedAt) > Math.max(6, 6 * this.track.spacing);
+  }
+
+  /** May be racked by what the float gave before: so little is left by the curve even were the fall half as quick since. */
+  private judgeRackBlind(hour: number): void {
+    const fit = this.fit();
+    const passed = this.pastCurvePeak();
+    if (!fit || passed === null || passed < CURVE_PAST_DAYS || !this.peaked.on || this.stuck.on || this.sluggish.on) return;
+    const from = this.track.tauAt(this.segment.from);
+    const last = this.track.tauAt(this.track.lastSound(hour)) - from;
+    const now = this.track.tauAt(hour) - from;
+    const left = (fit.curve.og - fit.curve.fg) * fit.curve.share(last + (now - last) / 2);
+    hold(this.rack, hour, left < RACK_BLIND_POINTS && this.quietSinceAddition(60, 120), 2, false);
+  }
+
+  /** Three days (two, where there are no more) that hardly fall, and surely do not fall fast. */
   private threeQuietDays(): boolean {
-    const line = this.line(72);
-    return line === null || -line.slope + 1.28 * line.se < 0.6;
-  }
-
-  /** It rests between where it should end and where it would be stuck, and has done so for days: the yeast's range was a little wrong. */
-  private restsAbove(): boolean {
-    const ground = this.groundLevel();
-    if (!this.peaked.on || ground === null || ground <= this.zoneTop() || ground > this.stuckFloor()) return false;
-    const flat = this.flatSince();
-    const tail = this.tail();
-    return flat !== null && this.lookedAt - flat >= RESTS_H && !this.coldNow() && tail !== null && tail.remaining + 1.28 * Math.hypot(tail.sd, 0.2) < BOTTLE_POINTS;
+    const line = this.line(72) ?? this.line(48);
+    return line === null || (-line.slope < QUIET_PACE && -line.slope + 1.28 * line.se < 0.6);
   }
 
   /** The gravity climbs, which a ferment does not: what is seen is the float. */
@@ -273,18 +205,19 @@ export class Watch extends Intake {
       (slowerThan(line48, 0.5, 0.75) || slowerThan(this.line(72), 0.35, 0.5)) &&
       (hour - (this.started.since ?? hour) > 96 || this.progress(level) > 0.12);
     const climbing = (flat || this.stuck.on) && (this.drifting.on || this.climbs(72) || this.climbs(168));
-    const moving =
-      this.stuck.on &&
-      [8, 24].some((window) => {
-        const line = this.line(window);
-        return line !== null && -line.slope - (window === 24 ? 1.64 : 2.5) * line.se > 1;
-      });
-    hold(this.stuck, hour, flat && !climbing, 3, moving || level < limit || climbing);
+    const falls = (window: number, sure: number): boolean => {
+      const line = this.line(window);
+      return line !== null && -line.slope - sure * line.se > 1;
+    };
+    // A few hours are soon deceived by noise: they must say so twice.
+    this.stirs = this.stuck.on && falls(8, 2.5) ? this.stirs + 1 : 0;
+    const moving = this.stuck.on && (falls(24, 1.64) || this.stirs > 1);
+    hold(this.stuck, hour, flat && !climbing, 3, moving || level < limit - STUCK_BAND || climbing);
     if (this.stuck.on) this.stuckCold = this.coldNow();
 
     const rate = line48 ? -line48.slope : null;
     let crawling = false;
-    const slow = hour > 48 && line48 !== null && rate !== null && rate + line48.se < 2.2 && !this.stuck.on && !this.drifting.on && this.quietSinceAddition(60, 96);
+    const slow = hour > 48 && line48 !== null && rate !== null && rate + line48.se < 2.2 && !this.quickens() && !this.stuck.on && !this.drifting.on && this.quietSinceAddition(60, 96);
     // What is left by the yeast's range, or by the curve where that says more. What has come to its end has said so already.
     const asked = this.peaked.on && rate !== null && (slow || this.sluggish.on);
     const left = asked ? Math.max(level - prior.mean, this.terminal.on ? 0 : CURVE_SURE * (this.leftOnCurve()?.value ?? 0)) : 0;
@@ -309,6 +242,14 @@ export class Watch extends Intake {
     const wasOn = this.refermenting.on;
     hold(this.refermenting, hour, level < this.plateau - drop && !this.stabilised && this.fallsBy(pace), 3, still || this.stabilised);
     if (wasOn && !this.refermenting.on) this.plateau = level;
+  }
+
+  /** The last hours fall faster than what is called slow: a batch that was cold works again before two days show it. */
+  private quickens(): boolean {
+    return [12, 24].some((window) => {
+      const line = this.line(window);
+      return line !== null && -line.slope - 1.28 * line.se > 2.2;
+    });
   }
 
   /** A day or two fall faster than so many points a day, beyond doubt. */

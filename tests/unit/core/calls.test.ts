@@ -69,6 +69,17 @@ describe('the calls', () => {
     expect(at(over + 2.5, stuck, { vesselL: 4.6 }).calls.neck.verdict).not.toBe('yes');
   });
 
+  it('let it be racked by what the float gave before it fell silent, once little is left even at half the pace, and ask for a reading first', () => {
+    const { rack, bottle } = at(8, record(4, cider)).calls;
+    expect(rack).toMatchObject({ verdict: 'yes', reason: 'By what the sensor gave before it fell silent.' });
+    expect(rack.act).toMatch(/^Read by hand first/);
+    expect(bottle.verdict).toBe('unknown');
+    expect(at(5, record(4, cider)).calls.rack.verdict).toBe('unknown');
+    // Silent before it had begun, nobody knows what came of it.
+    expect(at(12, record(1, cider)).calls.rack.verdict).not.toBe('yes');
+    expect(at(12, record(6, (day) => Math.max(25, cider(day)))).calls.rack.verdict).not.toBe('yes');
+  });
+
   it('see the peak of a late start within two days of it', () => {
     const late = (day: number): number => cider(Math.max(0, day - 5));
     let over = 5;
@@ -100,6 +111,13 @@ describe('the calls', () => {
     expect(calls.rack.verdict).toBe('yes');
     expect(calls.stalled.verdict).toBe('no');
     expect(stage).toBe('terminal');
+  });
+
+  it('do not let a batch be bottled that still falls, though it is far below its range already', () => {
+    // The range says that 15 points are the end; it has shown itself wrong.
+    const wrong = { attenuation: { min: 0.7, max: 0.75 }, originalGravity: 1.055 };
+    const slow = record(32, (day) => (day < 8 ? 55 - 5 * day : 15 - 0.45 * (day - 8)), () => 19, 0.8);
+    for (const day of [16, 20, 24, 28, 32]) expect(at(day, slow.filter((reading) => reading.at <= PITCH + day * DAY), wrong).calls.bottle.verdict, `day ${day}`).not.toBe('yes');
   });
 
   it('take "ready" back when a batch that has rested for weeks begins to fall', () => {

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { robustLine } from '../../../lib/core/series/line';
-import { fitTail } from '../../../lib/core/series/tail';
+import { fitTail, usualPace } from '../../../lib/core/series/tail';
 import { Random } from '../../evaluation/random';
 
 const hours = (n: number): Float64Array => Float64Array.from({ length: n }, (_, i) => i);
@@ -78,6 +78,19 @@ describe('the tail', () => {
     const tail = tailOf(0.3, 0, 6, 20);
     expect(Math.abs(tail.remaining)).toBeLessThan(0.3);
     expect(tail.sd).toBeLessThan(0.4);
+  });
+
+  it('lets an old batch slow down slower than a young one of the same record', () => {
+    const paces = [3, 10, 25, 30, 40, 60, 120].map((age) => usualPace(age));
+    expect(paces[0]).toBe(6);
+    expect(paces).toEqual([...paces].sort((a, b) => b - a));
+    expect(paces.at(-1)).toBeGreaterThan(3);
+    const t = Float64Array.from({ length: 200 }, (_, i) => i);
+    const random = new Random(4, 'age');
+    const g = t.map((hour) => 6 - (0.08 * hour) / 24 + random.normal(0, 0.3));
+    const left = [10, 30, 60].map((age) => fitTail(t, g, 0, 200, 200, age)!.remaining);
+    expect(left[0]).toBeLessThan(left[1]!);
+    expect(left[1]).toBeLessThan(left[2]!);
   });
 
   it('does not promise an end to a straight fall', () => {

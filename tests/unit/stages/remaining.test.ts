@@ -17,10 +17,10 @@ describe('what is still to fall', () => {
     expect(both).toMatchObject({ value: 2, sd: 0.8 });
   });
 
-  it('is told by the curve until four fifths of the fall are done, and by the tail alone at its end', () => {
+  it('is told by the curve until 85 % of the fall are done, and by the tail alone at its end', () => {
     const curve = { og: 50, fg: 0 };
-    expect(shareOfTail(curve, 10)).toBe(0);
-    expect(shareOfTail(curve, 5)).toBeCloseTo(0.5, 12);
+    expect(shareOfTail(curve, 7.5)).toBe(0);
+    expect(shareOfTail(curve, 3.75)).toBeCloseTo(0.5, 12);
     expect(shareOfTail(curve, 0)).toBe(1);
     expect(shareOfTail(curve, -3)).toBe(1);
     expect(shareOfTail({ og: 10, fg: 10 }, 10)).toBe(1);
