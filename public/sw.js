@@ -29,7 +29,9 @@ const MOST_DATA = 300;
 const KEEP = [
   { path: /^\/api\/v1\/shelf$/, query: false },
   { path: /^\/api\/v1\/batches\/[^/]+\/(series|judgement|assessment)$/, query: false },
-  { path: /^\/api\/v1\/(me|batches|alerts|jobs|mutes|sensors|sensor-health|members|lots|places)$/, query: true },
+  { path: /^\/api\/v1\/(me|batches|alerts|jobs|mutes|sensors|sensor-health|members|lots|places|musts|catalogue)$/, query: true },
+  // Not the bench: by an old log a bottle may look safe that is not.
+  { path: /^\/api\/v1\/(lots\/[^/]+(\/tastings)?|musts\/[^/]+)$/, query: true },
   { path: /^\/api\/v1\/batches\/[^/]+(\/(entries|assessments|drink|family|finings))?$/, query: true },
 ];
 /** Pages that stand on nobody's sign-in, or are somebody's key. */

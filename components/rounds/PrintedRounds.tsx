@@ -5,9 +5,10 @@ import { about, type RoundRow, type Stop } from './rows';
 const WITH_NOTES = 14;
 
 function Line({ row: { job, time, note }, notes }: { row: RoundRow; notes: boolean }) {
-  const what = about(job);
+  // The name stands in the job's own words as a rule; the tag is what one looks for.
+  const what = job.batch && job.title.includes(job.batch.name) ? job.batch.tag !== null && `tag ${job.batch.tag}` : about(job);
   return (
-    <li className="grid break-inside-avoid grid-cols-[1.125rem_8.5rem_minmax(0,1fr)_6rem_6.5rem] items-baseline gap-x-2 border-b py-[3px] text-[0.75rem]/[1rem]">
+    <li className={`grid break-inside-avoid grid-cols-[1.125rem_8.5rem_minmax(0,1fr)_6rem_6.5rem] items-baseline gap-x-2 border-b text-[0.6875rem]/[0.875rem] ${notes ? 'py-1' : 'py-[3px]'}`}>
       <span>☐</span>
       <span className="font-mono text-[0.6875rem] font-semibold">
         {time} <span className="font-normal">{note}</span>

@@ -51,7 +51,6 @@ function Walk({ now, timeZone, me, mayDo }: { now: number; timeZone: string; me:
 
   return (
     <>
-      {jobs && <PrintedRounds stops={stops} head={head} />}
       <div className="not-printed">
         <PageHead title="Rounds" meta={head}>
           <div className="flex flex-wrap gap-2">
@@ -112,6 +111,7 @@ function Walk({ now, timeZone, me, mayDo }: { now: number; timeZone: string; me:
           </Sheet>
         )}
       </div>
+      {jobs && <PrintedRounds stops={stops} head={head} />}
     </>
   );
 }

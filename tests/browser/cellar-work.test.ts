@@ -96,8 +96,8 @@ describe('a must sheet', () => {
 describe('the rounds', () => {
   it('of 25 jobs in five places are printed on one page, each of them', async () => {
     const walker = await buildMember('brewer');
-    const batches = await Promise.all(['by the sink', 'long shelf', 'north wall', 'under the stairs'].map((place, index) => ciderAt(walker, { batch: { place, tag: index + 1, name: `The ${place} perry of the second pressing` } })));
-    const titles = Array.from({ length: 25 }, (_, index) => `Look at the water in the airlock, number ${index + 1}`);
+    const batches = await Promise.all(['by the sink', 'long shelf', 'north wall', 'under the stairs'].map((place, index) => ciderAt(walker, { batch: { place, tag: index + 1, name: `Perry ${index + 1}` } })));
+    const titles = Array.from({ length: 25 }, (_, index) => `Water in the airlock, number ${index + 1}`);
     for (const [index, title] of titles.entries()) await createJob(walker, createJobForm.parse({ title, note: 'Top it up with boiled water.', due_at: new Date(Date.now() - 60_000).toISOString(), batch_id: batches[index % 5]?.id ?? null }));
     const { page, context } = await browser.visitAs(walker.personId, web.url);
     await open(page, '/rounds');

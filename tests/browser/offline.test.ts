@@ -2,6 +2,8 @@ import { randomUUID } from 'node:crypto';
 import type { BrowserContext, Page } from 'playwright-core';
 import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest';
 import { Batch, Entry, Job, Membership, SignIn } from '@/db/models';
+import { createMust } from '@/lib/services/musts/create';
+import { aSheet } from '../support/cellar';
 import { expectAccessible, expectNoSidewaysScroll, useBrowser, type Visit } from '../support/browser';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildCellar, buildMember } from '../support/factories';
@@ -83,6 +85,24 @@ describe('without a network', () => {
     await page.getByText(/Shown as of \d\d:\d\d/).waitFor();
     await online(context);
     await page.getByText(/Shown as of/).waitFor({ state: 'hidden', timeout: 60_000 });
+  });
+
+  it('shows a must sheet as it was last seen, for the kettle; not the bench, where an old log could make a bottle look safe', async () => {
+    const must = await createMust(wren, aSheet({ name: 'Kettle sheet' }));
+    const made = await visit();
+    const { page, context } = made;
+    await onTheShelf(made);
+    await page.goto(`${web.url}/musts/${must.id}`);
+    await page.getByRole('heading', { level: 1, name: 'Kettle sheet' }).waitFor();
+    await until('the kept sheet', async () => (await holds(page, `/musts/${must.id}`)) && holds(page, `/api/v1/musts/${must.id}`), 30_000);
+    await page.goto(`${web.url}/bench/${batch.id}`);
+    await page.getByRole('heading', { level: 1 }).waitFor();
+    await context.setOffline(true);
+    await page.goto(`${web.url}/musts/${must.id}`);
+    await page.getByRole('heading', { level: 1, name: 'Kettle sheet' }).waitFor();
+    await page.getByText(/Shown as of \d\d:\d\d/).waitFor();
+    await page.goto(`${web.url}/bench/${batch.id}`);
+    await page.getByText('Nothing is filled until it is judged here.').waitFor();
   });
 
   it('says so in a sentence where a page was never kept', async () => {
