@@ -7,7 +7,7 @@ import { Haze } from '@/components/ui/Haze';
 import { OnwardIcon } from '@/components/ui/icons';
 import { State } from '@/components/ui/StateMark';
 import { EmptyVessel } from '@/components/vessel/Vessel';
-import type { Action } from '@/lib/auth/policies';
+import type { Action } from '@/lib/core/actions';
 
 function Row({ vessel, name, picture, call }: { vessel: ReactNode; name: ReactNode; picture: ReactNode; call: ReactNode }) {
   return (

@@ -14,7 +14,7 @@ it('the trail says what was done to what, by the names that things have in this 
   const { sensor } = await buildSensor({ cellarId, name: 'Float 4' });
   const alert = await Alert.create({ cellarId, batchId: batch.id, call: 'stalled', level: 'check', state: 'open', since: new Date(), openedAt: new Date(), evidence: {} } as never);
   const foreign = await buildBatch({ name: 'Another cellar’s' });
-  const lines: Array<[action: string, subject: string, detail?: object]> = [
+  const lines: Array<[action: string, subject: string, detail?: Record<string, unknown>]> = [
     ['batch.muted', batch.id],
     ['alert.acknowledge', alert.id],
     ['entry.created', '00000000-0000-4000-8000-000000000001', { batch: batch.id, kind: 'note' }],
