@@ -16,7 +16,7 @@ import { CalendarFeed } from './CalendarFeed';
 import { NewJob } from './NewJob';
 import { PrintedRounds } from './PrintedRounds';
 import { RoundRow } from './RoundRow';
-import { countWords, dayStart, walk } from './rows';
+import { countWords, tonight, walk } from './rows';
 import { WaitingActs } from '@/components/offline/WaitingActs';
 import { useTicks } from './use-ticks';
 
@@ -39,10 +39,10 @@ function Walk({ now, timeZone, me, mayDo }: { now: number; timeZone: string; me:
   const done = useJobs({ state: 'done', limit: 50 });
   const { jobs, error, retry } = open;
 
-  const tonight = dayStart(now, timeZone, 1);
+  const until = tonight(now, timeZone);
   const all = [...(jobs ?? []).filter((job) => !ticks.ticked.has(job.id)), ...ticks.ticked.values()];
-  const dueToday = all.filter((job) => Date.parse(job.due_at) / 1000 < tonight);
-  const coming = all.filter((job) => Date.parse(job.due_at) / 1000 >= tonight);
+  const dueToday = all.filter((job) => Date.parse(job.due_at) / 1000 < until);
+  const coming = all.filter((job) => Date.parse(job.due_at) / 1000 >= until);
   const stops = walk(shown === 'today' ? dueToday : coming, now, timeZone);
   const next = coming.map((job) => Date.parse(job.due_at) / 1000).sort((a, b) => a - b)[0];
   const close = () => setOpened(null);

@@ -27,6 +27,12 @@ export function dayStart(at: number, timeZone: string, days: number): number {
   return instantOf({ year: wall.year, month: wall.month, day: wall.day + days }, timeZone);
 }
 
+/** Late in the evening the hours after midnight still belong to the walk, s: a clock of an hour must not be out of sight. */
+const LATE_S = 3 * 3600;
+
+/** What falls due before it is today's. */
+export const tonight = (now: number, timeZone: string): number => Math.max(dayStart(now, timeZone, 1), now + LATE_S);
+
 export function rowOf(job: JobBody, now: number, timeZone: string): RoundRow {
   const due = Date.parse(job.due_at) / 1000;
   const left = due - now;

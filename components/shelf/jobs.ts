@@ -1,5 +1,5 @@
 import { when } from '@/components/charts/zone';
-import { dayStart, rowOf, type RoundRow } from '@/components/rounds/rows';
+import { rowOf, tonight, type RoundRow } from '@/components/rounds/rows';
 import type { JobBody } from '@/lib/contracts/jobs';
 
 /** A job of the day on its strip. */
@@ -15,9 +15,9 @@ const waits = (row: RoundRow) => row.time === 'any day';
  * taken back. `now` in seconds since 1970.
  */
 export function todaysJobs(jobs: readonly JobBody[], kept: ReadonlyMap<string, JobBody>, now: number, timeZone: string): TodayJob[] {
-  const tonight = dayStart(now, timeZone, 1);
+  const until = tonight(now, timeZone);
   const all = [...jobs.filter((job) => !kept.has(job.id)), ...kept.values()];
-  const rows = all.filter((job) => dueOf(job) < tonight).map((job) => rowOf(job, now, timeZone));
+  const rows = all.filter((job) => dueOf(job) < until).map((job) => rowOf(job, now, timeZone));
   return rows
     .filter((row) => !waits(row))
     .sort((a, b) => Number(b.late) - Number(a.late) || Number(a.job.taken_by !== null) - Number(b.job.taken_by !== null) || dueOf(a.job) - dueOf(b.job) || a.job.id.localeCompare(b.job.id));
@@ -25,6 +25,6 @@ export function todaysJobs(jobs: readonly JobBody[], kept: ReadonlyMap<string, J
 
 /** The first time at which anything falls due after today, as a sentence for an empty day. */
 export function nothingDue(jobs: readonly JobBody[], now: number, timeZone: string): string {
-  const times = jobs.map(dueOf).filter((due) => due >= dayStart(now, timeZone, 1));
+  const times = jobs.map(dueOf).filter((due) => due >= tonight(now, timeZone));
   return times.length > 0 ? `Nothing due today. Next: ${when(Math.min(...times), now, timeZone)}.` : 'Nothing due today.';
 }

@@ -42,6 +42,13 @@ describe('today’s strip', () => {
     expect(ids(jobs)).toEqual(['tonight']);
   });
 
+  it('late in the evening holds the first hours after midnight too: a clock of an hour stays in sight', () => {
+    const late = Date.parse('2026-10-15T23:10Z') / 1000;
+    const jobs = [job('second dose', '2026-10-16T00:10Z'), job('morning', '2026-10-16T09:00Z')];
+    expect(todaysJobs(jobs, new Map(), late, 'UTC').map((row) => row.job.id)).toEqual(['second dose']);
+    expect(nothingDue(jobs, late, 'UTC')).toBe('Nothing due today. Next: Fri 09:00.');
+  });
+
   it('keeps a job in its place for as long as its tick can be taken back', () => {
     const [first, second] = [job('a', '2026-10-15T13:00Z'), job('b', '2026-10-15T13:30Z')];
     expect(ids([second], new Map([['a', first]]))).toEqual(['a', 'b']);
