@@ -12,8 +12,8 @@ const STATUS_WORDS: Record<HowAnswer['status'], string> = {
 };
 
 const plain = (value: number): string => String(Number(value.toPrecision(6))).replace('-', '−');
-/** Units that a person may read otherwise. */
-const READ: Record<string, (value: number) => string> = { SG: (sg) => gravityText(sg), '°C': (celsius) => temperatureText(celsius), L: (litres) => volumeText(litres, 2) };
+/** Units that a person may read otherwise, or that have their own number of places. */
+const READ: Record<string, (value: number) => string> = { SG: (sg) => gravityText(sg), '°C': (celsius) => temperatureText(celsius), L: (litres) => volumeText(litres, 2), '% vol': (share) => `${share.toFixed(2)} % vol` };
 
 /** An input with its unit, as the person reads it; a span of figures figure by figure. */
 function inputText(value: number | string | null, unit: string): string {
@@ -49,8 +49,8 @@ export function HowBody({ how }: { how: HowAnswer }) {
   );
 }
 
-/** The question as it looks: low in its row, with a finger's room around it on a phone. */
-export const HOW_LINK = "type-tick not-printed relative inline-flex min-h-6 items-center underline underline-offset-2 hover:text-ink max-strip:after:absolute max-strip:after:-inset-x-2.5 max-strip:after:-inset-y-2.5 max-strip:after:content-['']";
+/** The question as it looks: low in its row, with a finger's room around it on a phone, but none to the right, where the screen ends. */
+export const HOW_LINK = "type-tick not-printed relative inline-flex min-h-6 items-center underline underline-offset-2 hover:text-ink max-strip:after:absolute max-strip:after:-left-2.5 max-strip:after:right-0 max-strip:after:-inset-y-2.5 max-strip:after:content-['']";
 
 /** Every figure can be asked "how?": its formula, what went into it, and where the formula is from. */
 export function How({ how, of, named = false, className = '' }: { how: HowAnswer; /** Which figure, for those who hear the page. */ of: string; /** Said on the screen too, where several stand together. */ named?: boolean; className?: string }) {

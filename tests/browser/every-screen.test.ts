@@ -52,8 +52,8 @@ const RECKONS = ['shelf', 'rounds', 'batches/[id]', 'batches/[id]/work', 'bench/
 
 /** A figure with its unit, or a gravity, that stands by itself. */
 const FIGURE = /^[≈±−]?\s?\d+(?:\.\d+)?(?:[–-]\d+(?:\.\d+)?)?\s?(?:%|% vol|L|L\/h|g|g\/L|mg\/L|bar|volumes|points|°C|°Bx|°P)(?:[ ,].*)?$|^[01]\.\d{3}$/;
-/** What somebody told or read stands as it is: the log, readings by hand, a chart's numbers, drawings, what is typed; and a catalogue's usual ratings, each with its note below. */
-const AS_TOLD = ['section[aria-label="Log"]', '[aria-label="Readings by hand"]', '[aria-label="Numbers of the chart"]', '[aria-label="The curves as a table"]', 'svg', 'select', 'button', 'p', 'label', '.heard-only', '[aria-hidden="true"]', '.work-sheet', '.uplot'].join(',');
+/** What somebody told or read stands as it is: the log, readings by hand, a chart's numbers, drawings, what is typed; a catalogue's usual ratings, each with its note below; and what an answer itself holds. */
+const AS_TOLD = ['section[aria-label="Log"]', '[aria-label="Readings by hand"]', '[aria-label="Numbers of the chart"]', '[aria-label="The curves as a table"]', 'svg', 'select', 'button', 'p', 'label', '.heard-only', 'details[class*="group/how"]', '[aria-hidden="true"]', '.work-sheet', '.uplot'].join(',');
 
 /** Figures on the page that nobody can ask how they came about. */
 const unasked = (page: Page): Promise<string[]> =>
