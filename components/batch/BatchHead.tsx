@@ -101,11 +101,11 @@ export function BatchHead({ batch, vessel, facts, actions }: { batch: BatchBody;
 /** On a phone: the way back and the name, before the decision. */
 export function PhoneHead({ batch, meta, onSetup }: { batch: BatchBody; meta: readonly string[]; onSetup: (() => void) | null }) {
   return (
-    <header className="flex min-h-[46px] items-center gap-3 border-b-[1.5px] border-ink px-(--margin) py-1 strip:hidden">
+    <header className="flex min-h-[46px] items-center gap-2 border-b-[1.5px] border-ink px-(--margin) py-1 strip:hidden">
       <Link href="/shelf" className="type-label -ml-2 inline-flex min-h-11 items-center gap-1 px-2 text-ink2 no-underline">
         <BackIcon size={11} /> Shelf
       </Link>
-      <p className="type-sub min-w-0 flex-1 truncate" role="heading" aria-level={1}>
+      <p className="type-sub two-lines min-w-0 flex-1 break-words leading-[1.3125rem]!" role="heading" aria-level={1}>
         {batch.name}
       </p>
       <div className="type-label shrink-0 text-right text-ink2 max-[359px]:hidden" style={{ lineHeight: '1rem' }}>

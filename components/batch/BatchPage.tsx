@@ -33,7 +33,7 @@ import { Log } from './Log';
 import { logRows } from './log';
 import { OtherCurves } from './OtherCurves';
 import { SetupForm } from './SetupForm';
-import { Sheet } from './Sheet';
+import { Sheet } from '@/components/ui/Sheet';
 import { usePlays } from './use-plays';
 import { WhatIf } from './WhatIf';
 import { dayOf, STAGE_WORDS } from './words';

@@ -2,7 +2,7 @@
 
 import Link from 'next/link';
 import { useState, type CSSProperties } from 'react';
-import { Sheet } from '@/components/batch/Sheet';
+import { Sheet } from '@/components/ui/Sheet';
 import { sizeWords } from '@/components/bench/words';
 import { drinkHex } from '@/components/charts/palette';
 import { Shares } from '@/components/share/Shares';

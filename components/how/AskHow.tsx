@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { Sheet } from '@/components/batch/Sheet';
+import { Sheet } from '@/components/ui/Sheet';
 import { HOW_LINK, HowBody } from '@/components/ui/How';
 import type { How } from '@/lib/core/how/how';
 

@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { Sheet } from '@/components/batch/Sheet';
+import { Sheet } from '@/components/ui/Sheet';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
 import { Haze } from '@/components/ui/Haze';

@@ -1,7 +1,7 @@
 'use client';
 
 import { useMemo, useState } from 'react';
-import { Sheet } from '@/components/batch/Sheet';
+import { Sheet } from '@/components/ui/Sheet';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';

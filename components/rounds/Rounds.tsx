@@ -2,7 +2,7 @@
 
 import { useState } from 'react';
 import { clock, dayName, when } from '@/components/charts/zone';
-import { Sheet } from '@/components/batch/Sheet';
+import { Sheet } from '@/components/ui/Sheet';
 import { Button } from '@/components/ui/Button';
 import { FilterTabs } from '@/components/ui/FilterTabs';
 import { Haze } from '@/components/ui/Haze';

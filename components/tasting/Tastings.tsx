@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { Sheet } from '@/components/batch/Sheet';
+import { Sheet } from '@/components/ui/Sheet';
 import { dayWords } from '@/components/book/words';
 import { Photos } from '@/components/photos/Photos';
 import { Button } from '@/components/ui/Button';

@@ -1,7 +1,7 @@
 'use client';
 
 import { useEffect, useId, useRef, type ReactNode } from 'react';
-import { Button } from '@/components/ui/Button';
+import { Button } from './Button';
 
 /** A form over the page: at the right of a wide one, from below on a phone. The browser keeps the focus inside; Escape closes. */
 export function Sheet({ title, onClose, children }: { title: string; onClose: () => void; children: ReactNode }) {
