@@ -80,7 +80,7 @@ export function ImportFile() {
     <section aria-label="Bring in">
       <GroupBar word="Bring in" note="nothing is kept until you say so" />
       <div className="flex flex-col gap-3 border-b bg-desk px-(--margin) py-4">
-        {failed && <FormError>{fields.text ? `The file ${fields.text[0]}.` : failed}</FormError>}
+        {failed && <FormError>{fields.text ? `The file ${fields.text}.` : failed}</FormError>}
         <Choice
           label="what it holds"
           value={kind}
