@@ -13,6 +13,9 @@ const RECHECK_MS = 5_000;
 /** A reader that has not taken this many messages is gone or hostile. */
 const MOST_BEHIND = 256;
 const RECONNECT_MS = 2_000;
+/** A page asks for its data first and hears second: what changed between the two is told again to a stream that opens. */
+const AGAIN_MS = 15_000;
+const MOST_AGAIN = 2_000;
 
 const log = logFor('events');
 const encoder = new TextEncoder();
@@ -21,9 +24,14 @@ interface Stream extends LetIn {
   controller: ReadableStreamDefaultController<Uint8Array>;
 }
 
+const messageOf = (change: Change) => `event: change\ndata: ${JSON.stringify(change)}\n\n`;
+const concerns = (change: Change, { actor }: Stream) => actor.cellarId === change.cellar && (change.kind !== 'alert' || may(actor.role, 'alerts.read'));
+
 /** All open event streams of this server, fed by one connection that listens to PostgreSQL. */
 class EventHub {
   private readonly streams = new Set<Stream>();
+  /** Each change of late once, by what it says, with when it was last said; the oldest first. */
+  private readonly lately = new Map<string, { at: number; change: Change }>();
   private line: ReturnType<typeof hearChanges> | null = null;
   private beats: NodeJS.Timeout | undefined;
   private checks: NodeJS.Timeout | undefined;
@@ -40,6 +48,7 @@ class EventHub {
           if (this.stopping) return controller.close();
           this.streams.add(stream);
           const opened = stream;
+          this.tellAgain(opened);
           gone.addEventListener('abort', () => this.drop(opened), { once: true });
         },
         cancel: () => stream && this.drop(stream),
@@ -82,17 +91,38 @@ class EventHub {
   }
 
   private tell({ person: _, ...change }: Change): void {
-    const message = `event: change\ndata: ${JSON.stringify(change)}\n\n`;
-    this.send((stream) => (stream.actor.cellarId === change.cellar && (change.kind !== 'alert' || may(stream.actor.role, 'alerts.read')) ? message : null));
+    const message = messageOf(change);
+    this.lately.delete(message);
+    this.lately.set(message, { at: Date.now(), change });
+    this.forget();
+    this.send((stream) => (concerns(change, stream) ? message : null));
+  }
+
+  private tellAgain(stream: Stream): void {
+    this.forget();
+    const messages = [...this.lately].filter(([, { change }]) => concerns(change, stream)).map(([message]) => message);
+    // In one piece: many small ones would look like a reader that has fallen behind.
+    if (messages.length > 0) this.write(stream, messages.join(''));
+  }
+
+  private forget(): void {
+    const since = Date.now() - AGAIN_MS;
+    for (const [message, { at }] of this.lately) {
+      if (at >= since && this.lately.size <= MOST_AGAIN) return;
+      this.lately.delete(message);
+    }
   }
 
   private send(messageFor: (stream: Stream) => string | null): void {
     for (const stream of [...this.streams]) {
       const message = messageFor(stream);
-      if (message === null) continue;
-      if ((stream.controller.desiredSize ?? 0) <= 0) this.drop(stream);
-      else stream.controller.enqueue(encoder.encode(message));
+      if (message !== null) this.write(stream, message);
     }
+  }
+
+  private write(stream: Stream, message: string): void {
+    if ((stream.controller.desiredSize ?? 0) <= 0) this.drop(stream);
+    else stream.controller.enqueue(encoder.encode(message));
   }
 
   /** Ends the streams whose sign-in or membership has ended; a database that does not answer ends none. */

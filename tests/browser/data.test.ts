@@ -105,7 +105,8 @@ describe('webhooks', () => {
     await page.getByRole('button', { name: 'It is kept' }).click();
     expect(await page.getByText(/whsec_/).count()).toBe(0);
     await page.getByRole('button', { name: 'Try it' }).click();
-    await page.getByText('Waits').waitFor();
+    // In the log and, once the list is asked again, beside the address.
+    await page.getByText('Waits').first().waitFor();
     await Webhook.update({ disabledAt: new Date(), givenUpAt: new Date(), failingSince: new Date(Date.now() - 6 * 86_400_000) }, { where: { cellarId: keeper.cellarId } });
     await page.reload();
     await page.getByText(/Switched off by the house .*: nothing arrived since/).waitFor();

@@ -99,6 +99,24 @@ describe('live events', () => {
     page.end();
   });
 
+  it('tells a stream that opens what changed just before, once each: its page may have asked before the change', async () => {
+    const [mine, theirs] = [await buildMember('guest'), await buildMember('keeper')];
+    const early = await listening((await sessionCookie(mine.personId)).cookie);
+    for (const change of [
+      { cellar: mine.cellarId, kind: 'batch', batch: null },
+      { cellar: theirs.cellarId, kind: 'lot', batch: null },
+      { cellar: mine.cellarId, kind: 'alert', batch: null },
+      { cellar: mine.cellarId, kind: 'member', batch: null },
+      { cellar: mine.cellarId, kind: 'batch', batch: null },
+    ] as const)
+      await say(change);
+    await until('all of them', () => early.changes.length === 3);
+    const late = await listening((await sessionCookie(mine.personId)).cookie);
+    await until('both of them', () => late.changes.length === 2);
+    expect(late.changes.map(({ kind }) => kind).sort()).toEqual(['batch', 'member']);
+    for (const page of [early, late]) page.end();
+  });
+
   it('lets nobody listen without a session', async () => {
     expect((await listening(undefined)).status).toBe(401);
   });
