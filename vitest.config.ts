@@ -4,7 +4,7 @@ import { defineConfig } from 'vitest/config';
 const alias = { '@': fileURLToPath(new URL('.', import.meta.url)).replace(/\/$/, '') };
 
 /** Suites that share the machine's two cores with a database, a broker or a browser run one file at a time. */
-const project = (name: string, options: { timeout: number; parallel: boolean; needsDatabase: boolean; retry?: number }) => ({
+const project = (name: string, options: { timeout: number; parallel: boolean; needsDatabase: boolean }) => ({
   resolve: { alias },
   test: {
     name,
@@ -13,7 +13,6 @@ const project = (name: string, options: { timeout: number; parallel: boolean; ne
     testTimeout: options.timeout,
     hookTimeout: Math.max(options.timeout, 120_000),
     fileParallelism: options.parallel,
-    retry: options.retry ?? 0,
     globalSetup: options.needsDatabase ? ['tests/support/global-postgres.ts'] : [],
   },
 });
@@ -26,8 +25,7 @@ export default defineConfig({
       project('evaluation', { timeout: 300_000, parallel: true, needsDatabase: false }),
       project('integration', { timeout: 120_000, parallel: false, needsDatabase: true }),
       project('fault', { timeout: 300_000, parallel: false, needsDatabase: true }),
-      // A browser on a machine that does nothing else can still be late; one that fails twice is wrong. The report names what was tried again.
-      project('browser', { timeout: 240_000, parallel: false, needsDatabase: true, retry: process.env.CI ? 1 : 0 }),
+      project('browser', { timeout: 240_000, parallel: false, needsDatabase: true }),
     ],
   },
 });

@@ -82,7 +82,7 @@ describe('sharing a cellar', () => {
     const row = desk.getByRole('listitem').filter({ hasText: 'Ivy Pell' }).filter({ has: desk.getByRole('combobox') });
     await row.getByRole('button', { name: 'Take out' }).click();
     await row.getByRole('button', { name: 'Take out' }).click();
-    await phone.waitForURL(/\/welcome/, { timeout: 15_000 });
+    await phone.waitForURL(/\/welcome/);
     await phone.getByRole('heading', { name: /No cellar yet/ }).waitFor();
     await expectAccessible(phone);
     await mailTo('ivy@elsewhere.example', /no longer share/);

@@ -38,7 +38,8 @@ export function useBrowser() {
     });
     if (options.night !== undefined) await context.addInitScript((theme) => document.addEventListener('DOMContentLoaded', () => (document.documentElement.dataset.theme = theme)), options.night ? 'night' : 'day');
     const page = await context.newPage();
-    page.setDefaultTimeout(20_000);
+    // CI shares its two cores with others.
+    page.setDefaultTimeout(process.env.CI ? 40_000 : 20_000);
     const complaints: string[] = [];
     page.on('console', (message) => {
       if (message.type() === 'error') complaints.push(`${message.text()} ${message.location().url}`.trim());
