@@ -1,7 +1,7 @@
 import { dayName, wallTime } from '@/components/charts/zone';
 import type { Answer } from '@/components/how/AskHow';
 import type { LotSummary, OPENING_KINDS } from '@/lib/contracts/lots';
-import { HOW_COUNTED, HOW_TASTED, howOfLotCost, howOfLotStrength } from '@/lib/core/how/lots';
+import { HOW_COUNTED, HOW_TASTED } from '@/lib/core/how/lots';
 
 export const SPARKLE_WORDS: Record<LotSummary['sparkle'], string> = { still: 'still', light: 'lightly sparkling', sparkling: 'sparkling' };
 export const OPENING_WORDS: Record<(typeof OPENING_KINDS)[number], string> = { opened: 'opened', given: 'given away', broken: 'broken', gushed: 'gushed' };
@@ -27,8 +27,8 @@ export function answersOfLot(lot: LotSummary, money: (amount: number) => string)
   const { abv_percent: abv, cost_per_litre: cost, tastings } = lot;
   return [
     { name: 'left', says: leftWords(lot.counts), how: HOW_COUNTED },
-    ...(abv ? [{ name: 'strength', says: strengthWords(abv), how: howOfLotStrength({ originalGravity: lot.original_gravity, finalGravity: lot.final_gravity }, null) }] : []),
-    ...(cost ? [{ name: 'cost a litre', says: costWords(lot, money), how: howOfLotCost([['every line of the must sheet has a cost', lot.cost_known ? 'yes' : 'no', '']], lot.volume_l) }] : []),
+    ...(abv ? [{ name: 'strength', says: strengthWords(abv), how: lot.how.strength }] : []),
+    ...(cost ? [{ name: 'cost a litre', says: costWords(lot, money), how: lot.how.cost }] : []),
     ...(tastings.score ? [{ name: 'tasted', says: `${tastings.score.mean.toFixed(1)} of 10 by ${tastings.score.count}`, how: HOW_TASTED }] : []),
   ];
 }

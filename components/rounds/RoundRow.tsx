@@ -10,8 +10,7 @@ import { Vessel } from '@/components/vessel/Vessel';
 import { ClientError } from '@/lib/client/fetcher';
 import { snoozeJob, takeJob } from '@/lib/client/jobs';
 import type { jobSchema } from '@/lib/contracts/jobs';
-import { howOfCall } from '@/lib/core/how/judged';
-import { CALL_OF_KIND } from '@/lib/core/rounds/wanted';
+import { howOfJob } from '@/lib/core/how/jobs';
 import { NECKS } from '@/lib/core/types';
 import { VESSEL_KINDS } from '@/lib/contracts/batches';
 import type { z } from 'zod';
@@ -73,7 +72,7 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
   const saved = ticks.saved.has(job.id);
   const waiting = ticks.waiting.has(job.id);
   const mine = job.taken_by?.id === me;
-  const call = job.source === 'call' ? CALL_OF_KIND[job.kind] : undefined;
+  const how = howOfJob(job);
 
   async function send(act: () => Promise<unknown>) {
     setBusy(true);
@@ -107,9 +106,9 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
               <Sentence>{job.title}</Sentence>
             )}
           </p>
-          {job.note && (
+          {(job.note ?? how) && (
             <p className="type-reason text-ink2">
-              <Sentence>{job.note}</Sentence> {call && <AskHow tight of={`${job.title}: its call`} answers={() => [{ name: 'the rule of its call', says: job.batch?.name ?? '', how: howOfCall(call, []) }]} />}
+              {job.note && <Sentence>{job.note}</Sentence>} {how && <AskHow tight of={job.title} answers={() => [{ name: 'why, and from when', says: [row.time, row.note].filter(Boolean).join(' '), how }]} />}
             </p>
           )}
           <p className="type-label text-ink2">

@@ -1,4 +1,5 @@
 import { QueryTypes, type Transaction } from 'sequelize';
+import { CALL_OF_KIND } from '@/lib/core/rounds/wanted';
 import { database } from '../client';
 import type { Job } from '../models';
 
@@ -8,6 +9,8 @@ export interface JobRow extends Pick<Job, 'id' | 'kind' | 'title' | 'note' | 'so
   dueAtText: string;
   batch: { id: string; name: string; tag: number | null; place: string | null; vesselKind: string; drinkColour: string; neck: string; volumeL: number; vesselL: number } | null;
   lot: { id: string; code: string; name: string; place: string | null } | null;
+  /** Of the call it comes from, in the last judgement. */
+  evidence: { name: string; value: number; threshold: number | null; unit: string }[] | null;
   takenBy: { id: string; name: string } | null;
   doneBy: { id: string; name: string } | null;
   createdBy: { id: string; name: string } | null;
@@ -47,9 +50,11 @@ export function findJobs(filter: JobFilter, transaction?: Transaction): Promise<
        ${DUE} as "dueAt", (${at})::text as "dueAtText",
        case when b.id is not null then json_build_object('id', b.id, 'name', b.name, 'tag', b.tag, 'place', b.place, 'vesselKind', b.vessel_kind, 'drinkColour', b.drink_colour, 'neck', b.neck, 'volumeL', b.volume_l, 'vesselL', b.vessel_l) end as batch,
        case when l.id is not null then json_build_object('id', l.id, 'code', l.code, 'name', l.name, 'place', stand.place) end as lot,
+       case when j.source = 'call' then s.assessment #> array['calls', $callOf::jsonb ->> j.kind, 'evidence'] end as evidence,
        ${person('taker')} as "takenBy", ${person('doer')} as "doneBy", ${person('maker')} as "createdBy"
      from jobs j
      left join batches b on b.id = j.batch_id
+     left join batch_states s on s.batch_id = j.batch_id
      left join lots l on l.id = j.lot_id
      left join lateral (
        select p.name as place from bottle_stands s join lot_bottles lb on lb.id = s.lot_bottle_id join places p on p.id = s.place_id where lb.lot_id = l.id order by s.count desc limit 1
@@ -63,6 +68,7 @@ export function findJobs(filter: JobFilter, transaction?: Transaction): Promise<
       bind: {
         cellarId: filter.cellarId,
         limit: filter.limit,
+        callOf: JSON.stringify(CALL_OF_KIND),
         ...(filter.id !== undefined && { id: filter.id }),
         ...(filter.until !== undefined && { until: filter.until }),
         ...(filter.batchId !== undefined && { batchId: filter.batchId }),

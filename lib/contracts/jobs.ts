@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { callSchema } from './assessment';
 import { id, line, text, timestamp } from './common';
 
 /** What a job is about; `other` is whatever somebody wrote down. */
@@ -21,6 +22,8 @@ export const jobSchema = z.object({
   /** Why, in the words of the call, or what the person added. */
   note: z.string().nullable(),
   source: z.enum(JOB_SOURCES),
+  /** What its call was held to when it was last judged; null where no call asks for it. */
+  evidence: callSchema.shape.evidence.nullable(),
   state: z.enum(JOB_STATES),
   /** When it is to be done; a snooze moves it. */
   due_at: z.string(),

@@ -71,6 +71,7 @@ const lotFields = {
   /** False where part of it was never told: it cost that or more. */
   cost_known: z.boolean(),
   tastings: tastingSummary,
+  how: z.object({ strength: howSchema, cost: howSchema }),
 };
 
 export const lotSummary = z.object(lotFields);
@@ -104,7 +105,7 @@ export const lotSchema = z.object({
   /** What is written on the lot itself. */
   own_next_time: z.string().nullable(),
   note: z.string().nullable(),
-  how: z.object({ strength: howSchema, gravity: howSchema, sparkle: howSchema, cost: howSchema, ready: howSchema }),
+  how: lotFields.how.extend({ gravity: howSchema, sparkle: howSchema, ready: howSchema }),
   cost: z.object({ total: rangeSchema.nullable(), known: z.boolean(), other: z.number().nullable() }),
 });
 export type LotBody = z.infer<typeof lotSchema>;

@@ -2,8 +2,12 @@ import { readdirSync } from 'node:fs';
 import { join } from 'node:path';
 import type { Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { batchState } from '@/db/queries/batch-states';
 import type { Actor } from '@/lib/auth/policies';
+import type { AssessmentBody } from '@/lib/contracts/assessment';
+import { assessBatch } from '@/lib/services/batches/assess';
 import { expectAccessible, expectNoSidewaysScroll, useBrowser } from '../support/browser';
+import { ciderAt } from '../support/cellar';
 import { useDatabase } from '../support/database';
 import { buildMember } from '../support/factories';
 import type { Things } from '../support/role-rows';
@@ -121,4 +125,35 @@ describe('every screen', () => {
     expect([...seen].length).toBeGreaterThanOrEqual(RECKONS.length - 2);
     await context.close();
   }, 300_000);
+
+  it('answers for a job with what its call was held to, and for a row of the book as the lot itself does', async () => {
+    const cellar = { ...keeper, role: 'brewer' } as const;
+    const done = await ciderAt(cellar, { now: Date.now(), readDaysAgo: [30, 20, 12, 9, 5, 1], batch: { name: 'Perry' } });
+    await assessBatch(done.id);
+    const { evidence } = (await batchState<AssessmentBody>(done.id))!.assessment.calls.bottle;
+    expect(evidence.length).toBeGreaterThan(0);
+    const { page, context } = await browser.visitAs(keeper.personId, web.url, {});
+    await page.goto(`${web.url}/rounds`);
+    await page.getByRole('button', { name: 'how? Bottle Perry' }).click();
+    const inputs = page.getByRole('dialog').locator('dd dl');
+    for (const { name, threshold } of evidence) {
+      await inputs.getByText(name, { exact: true }).waitFor();
+      expect(await inputs.getByText(`${name}, limit`, { exact: true }).count()).toBe(threshold === null ? 0 : 1);
+    }
+
+    await page.goto(`${web.url}/book`);
+    await page.getByRole('button', { name: /^how\? figures of/ }).first().click();
+    const row = page.getByRole('dialog');
+    const inRow = (figure: string) => row.locator('div', { has: page.locator('dt', { hasText: figure }) }).last().locator('dd').first().textContent();
+    const [strength, cost] = [await inRow('strength'), await inRow('cost a litre')];
+    expect(strength).toContain('sugar for fizz');
+    await page.goto(`${web.url}/book/${there.lotId}`);
+    const onLot = async (figure: string) => {
+      const how = page.locator('details', { has: page.getByText(`how? ${figure}`) });
+      await how.locator('summary').click();
+      return how.locator('div').first().textContent();
+    };
+    expect([await onLot('strength'), await onLot('cost a litre')]).toEqual([strength, cost]);
+    await context.close();
+  }, 120_000);
 });

@@ -1,6 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { Alert, Batch, Entry, FiningRun, Job, Membership } from '@/db/models';
 import { inTransaction } from '@/db/client';
+import { batchState } from '@/db/queries/batch-states';
+import type { AssessmentBody } from '@/lib/contracts/assessment';
 import { createEntry as entryForm } from '@/lib/contracts/batches';
 import { finingForm, secondDoseForm } from '@/lib/contracts/family';
 import { createJob as jobForm, jobQuery } from '@/lib/contracts/jobs';
@@ -9,6 +11,7 @@ import type { Actor } from '@/lib/auth/policies';
 import { ConflictError, ForbiddenError, InvalidError, NotFoundError } from '@/lib/errors';
 import { endCalendar, getCalendar, makeCalendar } from '@/lib/services/calendar/own';
 import { readCalendar } from '@/lib/services/calendar/read';
+import { assessBatch } from '@/lib/services/batches/assess';
 import { createEntry } from '@/lib/services/entries/create';
 import { listFinings } from '@/lib/services/finings/list';
 import { secondDose } from '@/lib/services/finings/second';
@@ -54,6 +57,18 @@ describe('the program’s jobs', () => {
     expect(await titles(hand)).toEqual(['Rack Perry']);
     await sync(batch, null, NOON + 6 * HOUR);
     expect(await titles(hand)).toEqual([]);
+  });
+
+  it('bring what their call was held to, as it was last judged, and nothing of another call', async () => {
+    const brewer = await buildMember('brewer');
+    const batch = await ciderAt(brewer, { now: Date.now(), readDaysAgo: [30, 20, 12, 9, 5, 1] });
+    await assessBatch(batch.id);
+    const kept = (await batchState<AssessmentBody>(batch.id))!.assessment;
+    const bottle = (await listJobs(brewer, open)).items.find((job) => job.kind === 'bottle');
+    expect(bottle?.evidence?.length).toBeGreaterThan(0);
+    expect(bottle?.evidence).toEqual(kept.calls.bottle.evidence);
+    await createJob(brewer, jobForm.parse({ title: 'Rack it', kind: 'rack', batch_id: batch.id, due_at: isoAt(NOON) }));
+    expect((await listJobs(brewer, open)).items.find((job) => job.title === 'Rack it')?.evidence).toBeNull();
   });
 
   it('leave rack and bottle aside until a fining has settled', async () => {

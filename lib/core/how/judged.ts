@@ -84,8 +84,16 @@ const RULES: Record<CallName, { formula: string; source: Parameters<typeof how>[
   sensor: { formula: 'silent after 6 hours, or six of its own intervals where that is longer; stuck where its noise falls under 0.3 of what is usual for it; adrift where a hydrometer says 4 points else', source: SOURCES.ownRule },
 };
 
+/** A figure that a call was held to. */
+export interface Evidence {
+  name: string;
+  value: number;
+  threshold: number | null;
+  unit: string;
+}
+
 /** How a call comes about: its rule, and the figures that it was held to. */
-export function howOfCall(name: CallName, evidence: readonly { name: string; value: number; threshold: number | null; unit: string }[]): How {
+export function howOfCall(name: CallName, evidence: readonly Evidence[]): How {
   const rule = RULES[name];
   return how(
     rule.formula,

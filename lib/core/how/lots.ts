@@ -12,8 +12,8 @@ const gravities = (lot: Bottled): InputTuple[] => [
   ['final gravity', lot.finalGravity, 'SG'],
 ];
 
-export const howOfLotStrength = (lot: Bottled, sugar: string | null): How =>
-  how('Balling from the gravity with all the sugar that went in and the last hydrometer reading, each good to half a division, and what the sugar for fizz adds', SOURCES.balling, [...gravities(lot), ...(sugar === null ? [] : [['sugar for fizz', sugar, ''] as const])]);
+export const howOfLotStrength = (lot: Bottled, sugar: string): How =>
+  how('Balling from the gravity with all the sugar that went in and the last hydrometer reading, each good to half a division, and what the sugar for fizz adds', SOURCES.balling, [...gravities(lot), ['sugar for fizz', sugar, '']]);
 
 export const howOfLotGravity = (lot: Bottled): How =>
   how('first: the must’s gravity with all the sugar that went in until it was bottled; last: the hydrometer reading that it was bottled by', SOURCES.told, gravities(lot));

@@ -6,11 +6,12 @@ const HOUR = 3_600_000;
 const DAY = 24 * HOUR;
 
 /** A batch that no sensor follows is read by hand this often, while it works and once it has stopped. Our own rule. */
-const READ_EVERY_MS = { working: 3 * DAY, terminal: 7 * DAY } as const;
+export const READ_EVERY_DAYS = { working: 3, terminal: 7 } as const;
 /** A float heard within this stands for a reading. */
 const FLOAT_COUNTS_MS = DAY;
 /** Water in an airlock dries up in two or three weeks: common practice. */
-const AIRLOCK_EVERY_MS = 14 * DAY;
+export const AIRLOCK_EVERY_DAYS = 14;
+const AIRLOCK_EVERY_MS = AIRLOCK_EVERY_DAYS * DAY;
 /** A job that falls due by the clock is put down this long before. */
 const AHEAD_MS = DAY;
 
@@ -91,7 +92,7 @@ function readingDue(input: RoundsInput): Wanted[] {
   const { pitchedAt, floatAt, readAt, at, stage, name } = input;
   if (pitchedAt === null || (floatAt !== null && at - floatAt < FLOAT_COUNTS_MS)) return [];
   const last = Math.max(pitchedAt, readAt ?? 0, floatAt ?? 0);
-  const dueAt = last + (stage === 'terminal' ? READ_EVERY_MS.terminal : READ_EVERY_MS.working);
+  const dueAt = last + READ_EVERY_DAYS[stage === 'terminal' ? 'terminal' : 'working'] * DAY;
   if (at < dueAt - AHEAD_MS) return [];
   return [{ kind: 'reading', source: 'schedule', title: `Read ${name} by hand`, note: 'No sensor tells how it goes.', dueAt, exact: false }];
 }

@@ -9,6 +9,7 @@ export function presentJob(row: JobRow): JobBody {
     title: row.title,
     note: row.note,
     source: row.source,
+    evidence: row.evidence,
     state: row.doneAt !== null ? 'done' : row.droppedAt !== null ? 'dropped' : 'open',
     due_at: iso(row.dueAt),
     exact: row.exact,

@@ -1,5 +1,5 @@
 import { snakeKeys } from '@/lib/contracts/case';
-import type { LotBody } from '@/lib/contracts/lots';
+import type { LotBody, LotSummary } from '@/lib/contracts/lots';
 import { howOfHolds } from '@/lib/core/bottling/bottles';
 import { drinkPressure } from '@/lib/core/bottling/co2';
 import { how } from '@/lib/core/how/how';
@@ -10,12 +10,32 @@ import type { LotRow } from '@/db/queries/lots';
 import type { KeptBench, KeptCost, KeptPressure } from './kept';
 import { LIGHT_FROM, SPARKLING_FROM } from './sparkle';
 
+type Kept = Pick<LotRow, 'originalGravity' | 'finalGravity' | 'volumeL'>;
+
+/** `10 g of table sugar` */
+function fizz({ shown: { dose } }: KeptBench): string {
+  return dose.way === 'weighed' ? `${dose.total_g.toFixed(0)} g of ${dose.sugar.name}` : dose.way === 'drops' ? `${dose.total_drops} drops` : 'none';
+}
+
+/** Where the figures of a row of the book come from. */
+export const howOfRow = (row: Kept, bench: KeptBench, cost: KeptCost): LotSummary['how'] => ({
+  strength: snakeKeys(howOfLotStrength(row, fizz(bench))),
+  cost: snakeKeys(
+    howOfLotCost(
+      [
+        ['from the must sheet', cost.must && Number(cost.must.value.toFixed(2)), ''],
+        ['every line of it has a cost', cost.known ? 'yes' : 'no', ''],
+        ['bottles, caps and sugar', cost.other, ''],
+      ],
+      row.volumeL,
+    ),
+  ),
+});
+
 /** Where the figures of a lot come from, as they were kept on the day it was bottled. */
-export function howOfLot(row: Pick<LotRow, 'originalGravity' | 'finalGravity' | 'volumeL'>, bench: KeptBench, cost: KeptCost): LotBody['how'] {
-  const { dose } = bench.shown;
-  const sugar = dose.way === 'weighed' ? `${dose.total_g.toFixed(0)} g of ${dose.sugar.name}` : dose.way === 'drops' ? `${dose.total_drops} drops` : 'none';
+export function howOfLot(row: Kept, bench: KeptBench, cost: KeptCost): LotBody['how'] {
   return {
-    strength: snakeKeys(howOfLotStrength(row, sugar)),
+    ...howOfRow(row, bench, cost),
     gravity: snakeKeys(howOfLotGravity(row)),
     sparkle: snakeKeys(
       how(`sparkling from ${SPARKLING_FROM} volumes of gas, lightly sparkling from ${LIGHT_FROM}, by what was wanted; where nothing was, by what is likely in the bottle`, SOURCES.ownRule, [
@@ -23,19 +43,9 @@ export function howOfLot(row: Pick<LotRow, 'originalGravity' | 'finalGravity' | 
         ['likely in the bottle', bench.shown.volumes && Number(bench.shown.volumes.value.toFixed(2)), 'volumes'],
       ]),
     ),
-    cost: snakeKeys(
-      howOfLotCost(
-        [
-          ['from the must sheet', cost.must && Number(cost.must.value.toFixed(2)), ''],
-          ['every line of it has a cost', cost.known ? 'yes' : 'no', ''],
-          ['bottles, caps and sugar', cost.other, ''],
-        ],
-        row.volumeL,
-      ),
-    ),
     ready: snakeKeys(
       how('with sugar for fizz 14 days at 20 °C, slower in the cold by 2.2 times for 10 °C, never less; still, 7 days. Then as somebody set it', practice('two weeks in the warm, then a cool place'), [
-        ['sugar for fizz', sugar, ''],
+        ['sugar for fizz', fizz(bench), ''],
         ['judged for a cellar of', bench.shown.cellar_c, '°C'],
       ]),
     ),

@@ -6,7 +6,7 @@ import { times } from '@/lib/core/units/range';
 import { iso } from '../iso';
 import { presentNextTime } from '../musts/get';
 import { summaryOf } from '../tastings/summary';
-import { howOfLot, howOfPressure } from './how';
+import { howOfLot, howOfPressure, howOfRow } from './how';
 import { keptBench, keptCost, keptPressure, totalCost } from './kept';
 
 export function presentLot(row: LotRow, now: number): LotSummary {
@@ -32,6 +32,7 @@ export function presentLot(row: LotRow, now: number): LotSummary {
     cost_per_litre: total && times(total, 1 / row.volumeL),
     cost_known: cost.known,
     tastings: summaryOf(row.tastings),
+    how: howOfRow(row, keptBench(row.bench), cost),
   };
 }
 

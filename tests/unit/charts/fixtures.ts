@@ -16,6 +16,7 @@ export const picture = (over: Partial<Picture> = {}): Picture => ({
   curve: [],
   expected: [],
   gas: [],
+  gasNow: null,
   originalGravity: 1.06,
   bed: { value: 1.01, lo: 1.007, hi: 1.013 },
   likelyEnd: null,

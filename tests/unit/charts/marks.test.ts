@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { drinkHex, drinkShare, isDark, luminance } from '@/components/charts/palette';
 import { hazeTile } from '@/components/charts/haze';
-import { keepClear, placePosts } from '@/components/charts/place';
+import { keepClear, placePosts, rightmostRoom } from '@/components/charts/place';
 import { temperatureWords } from '@/components/charts/over';
 import { pictureOf, postsOf } from '@/components/charts/from-wire';
 import { twinOf } from '@/components/charts/twin';
@@ -36,6 +36,21 @@ describe('labels', () => {
     const label = (x: number) => ({ x, y: 0, width: 30, height: 12 });
     expect(keepClear([label(0), label(20), label(40)])).toEqual([0, 2]);
     expect(keepClear([label(0), label(40)], [label(10)])).toEqual([1]);
+  });
+});
+
+describe('a caption', () => {
+  const room = { from: 0, to: 100 };
+  it('stands as far right as it covers nothing, and nowhere where there is no room', () => {
+    expect(rightmostRoom(30, room, [])).toBe(100);
+    expect(rightmostRoom(30, room, [{ from: 80, to: 90 }])).toBe(80);
+    expect(rightmostRoom(8, room, [{ from: 80, to: 90 }])).toBe(100);
+    expect(rightmostRoom(30, room, [{ from: 80, to: 120 }, { from: 60, to: 70 }])).toBe(60);
+    expect(rightmostRoom(30, room, [{ from: 20, to: 95 }])).toBeNull();
+  });
+
+  it('is not moved by what lies under another', () => {
+    expect(rightmostRoom(30, room, [{ from: 40, to: 98 }, { from: 60, to: 70 }])).toBe(40);
   });
 });
 

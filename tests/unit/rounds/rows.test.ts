@@ -12,6 +12,7 @@ function job(id: string, change: Partial<JobBody> & { place?: string | null; tag
     title: id,
     note: null,
     source: 'person',
+    evidence: null,
     state: 'open',
     due_at: '2026-10-15T12:00:00Z',
     exact: false,

@@ -10,6 +10,7 @@ const job = (id: string, due: string, change: Partial<JobBody> = {}): JobBody =>
   title: `Read Perry by hand (${id})`,
   note: null,
   source: 'person',
+  evidence: null,
   state: 'open',
   due_at: at(due),
   exact: true,
