@@ -118,6 +118,7 @@ export function pictureOf(
     curve: points(drawn?.curve),
     expected: points(drawn?.expected),
     gas: (drawn?.gas ?? []).map((bin) => ({ at: seconds(bin.at), value: Math.max(0, bin.value) })),
+    gasNow: assessment?.gas_l_per_h?.value ?? null,
     originalGravity: batch.original_gravity,
     bed: bedOf(batch),
     // An end that has passed is not likely any more, it is known.

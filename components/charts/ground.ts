@@ -90,7 +90,7 @@ export const bed: Mark = (view) => {
   line(context, [[left, y], [right, y]]);
 };
 
-/** The gas that the airlock holds. */
+/** The gas that the airlock holds; its words are a caption. */
 export const airlockLine: Mark = (view) => {
   const { context, palette, layout, picture, left, right } = view;
   if (!layout.gas || picture.airlockHolds === null) return;
@@ -99,21 +99,15 @@ export const airlockLine: Mark = (view) => {
   context.setLineDash([3, 3]);
   line(context, [[left, y], [right, y]]);
   context.setLineDash([]);
-  setText(view, palette.ink2);
-  context.textAlign = 'right';
-  const words = `airlock holds under ${picture.airlockHolds.toFixed(2)}`;
-  // On a phone the figure of now stands over the line, so that the words go under it where there is room.
-  const below = layout.style === 'phone' && view.y(layout.gas, 0) - y > 12;
-  underText(view, words, right - 6, below ? y + 9 : y - 9);
 };
 
 /** Text on a patch of paper, so that rules do not run through it. */
-export function underText(view: View, words: string, x: number, y: number): void {
+export function underText(view: View, words: string, x: number, y: number, cover = 0.75): void {
   const { context, palette } = view;
   const width = context.measureText(words).width;
   const from = context.textAlign === 'right' ? x - width : x;
   const colour = context.fillStyle;
-  context.fillStyle = thin(palette.sheet, 0.75);
+  context.fillStyle = thin(palette.sheet, cover);
   context.fillRect(from - 2, y - 7, width + 4, 14);
   context.fillStyle = colour;
   context.fillText(words, x, y);

@@ -1,9 +1,10 @@
 import uPlot from 'uplot';
 import type { Calendar } from './calendar';
 import { SERIES } from './columns';
+import { airlockWords, bedWords } from './captions';
 import { airlockLine, bed, calendarRules, rangeBand, stripNames, stripRules, valueRules } from './ground';
 import { hazePattern } from './haze';
-import { bedWords, bracket, expectedWords, likelyEnd, nowLine, posts, rings } from './over';
+import { bracket, expectedWords, likelyEnd, nowLine, posts, rings } from './over';
 import { laidCurves } from './laid';
 import { drinkShare, thin, type Palette } from './palette';
 import { hasStopped, type Picture, type Span } from './picture';
@@ -54,7 +55,7 @@ export function chartOptions(scene: () => Scene, size: { width: number; height: 
   const band = (plot: uPlot) => hazePattern(plot.ctx, scene().palette, ratio(), true);
   const silent: uPlot.Series = { scale: 'gravity', points: HIDDEN, spanGaps: true };
   const underlay = calendarRules(() => scene().calendar);
-  const overlay = [stripNames, laidCurves, bedWords, posts, likelyEnd, expectedWords, rings, bracket, nowLine(scene().timeZone)];
+  const overlay = [stripNames, laidCurves, bedWords, airlockWords, posts, likelyEnd, expectedWords, rings, bracket, nowLine(scene().timeZone)];
 
   const series: uPlot.Series[] = [{}];
   series[SERIES.bandHigh] = silent;

@@ -1,4 +1,4 @@
-import { gravityDoubt, gravityNumber, temperatureSpan, temperatureText } from '@/components/ui/units';
+import { gravityNumber, temperatureSpan, temperatureText } from '@/components/ui/units';
 import { placePosts, keepClear, type Label } from './place';
 import { gravityNow, hasStopped, knownUntil, valueAt, type Bracket, type Picture } from './picture';
 import { clock, when } from './zone';
@@ -67,10 +67,9 @@ export const rings: Mark = (view) => {
   }
 };
 
-/** On a page the letters stand under the bed, with their words; in a lane on the bed, or hanging where it lies flat. */
-export const posts: Mark = (view) => {
-  const { context, palette, layout, picture, top, bottom } = view;
-  const page = isPage(view);
+/** Where the boxes of the events stand, and which of them have room for their word. */
+export function postPlaces(view: View) {
+  const { context, palette, layout, picture } = view;
   const size = layout.style === 'lane' ? 15 : 17;
   setText(view, palette.ink, 600, 0.96);
   context.textAlign = 'left';
@@ -78,7 +77,14 @@ export const posts: Mark = (view) => {
     .map((post) => ({ ...post, x: view.x(post.at), box: Math.max(size, context.measureText(post.letters).width + 8), wordWidth: context.measureText(post.word).width + 6 }))
     .filter((post) => inside(view, post.x, 2));
   const placed = placePosts(shown.map((post) => ({ x: post.x, box: post.box, word: post.wordWidth })), view.right);
-  const bedY = view.y(layout.gravity, picture.bed?.value ?? layout.gravity.min);
+  return { size, shown, placed, bedY: view.y(layout.gravity, picture.bed?.value ?? layout.gravity.min) };
+}
+
+/** On a page the letters stand under the bed, with their words; in a lane on the bed, or hanging where it lies flat. */
+export const posts: Mark = (view) => {
+  const { context, palette, top, bottom } = view;
+  const page = isPage(view);
+  const { size, shown, placed, bedY } = postPlaces(view);
   for (const place of placed) {
     const post = shown[place.index]!;
     const curveY = surface(view, post.at);
@@ -175,16 +181,6 @@ export const likelyEnd: Mark = (view) => {
   const beyond = from > right - 4;
   setText(view, beyond ? palette.ink2 : palette.ink, 500, 0.96);
   context.fillText(beyond ? `to ${words} ›` : words, Math.min(Math.max(to, view.x(picture.now) + 190), right - 4), view.bottom - (layout.height < 70 ? 8 : 13));
-};
-
-export const bedWords: Mark = (view) => {
-  const { context, palette, layout, picture, right } = view;
-  if (!picture.bed || layout.style === 'lane') return;
-  const doubt = Math.max(0.001, (picture.bed.hi - picture.bed.lo) / 2);
-  const figures = `${gravityNumber(picture.bed.value)} ${gravityDoubt(picture.bed.value, doubt)}`;
-  setText(view, palette.ink, layout.style === 'phone' ? 600 : 500);
-  context.textAlign = 'right';
-  underText(view, layout.style === 'phone' ? `bed ${figures}` : `bed: where it should stop, ${figures}`, right - 6, view.y(layout.gravity, picture.bed.value) + (layout.style === 'phone' ? 12 : 10));
 };
 
 /** `what it should have done, 8 in 10`, with a hairline to the band. */
@@ -298,9 +294,8 @@ function figuresNow(view: View, x: number, timeZone: string): void {
     const value = picture.readings.temperature.findLast((item) => item !== null) ?? layout.temperature.min;
     put(words, lane ? view.bottom - (layout.height < 70 ? 8 : 13) : Math.min(view.y(layout.temperature, value), view.top + layout.temperature.top + layout.temperature.height - 4));
   }
-  const gas = picture.gas.findLast((bin) => bin.at <= picture.now);
-  if (layout.gas && gas && picture.silentAt === null) {
+  if (layout.gas && picture.gasNow !== null && picture.silentAt === null) {
     setText(view, palette.ink, 600);
-    put(gas.value.toFixed(2), Math.min(view.y(layout.gas, gas.value), view.y(layout.gas, 0) - 7));
+    put(picture.gasNow.toFixed(2), Math.max(view.y(layout.gas, layout.gas.max) + 5, Math.min(view.y(layout.gas, picture.gasNow), view.y(layout.gas, 0) - 7)));
   }
 }

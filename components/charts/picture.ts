@@ -51,6 +51,8 @@ export interface Picture {
   /** What should have happened, where the batch left its curve. */
   expected: readonly GravityPoint[];
   gas: readonly { at: number; value: number }[];
+  /** As it was judged, which looks over more hours than a bar. */
+  gasNow: number | null;
   originalGravity: number | null;
   /** Where the fall should stop. */
   bed: { value: number; lo: number; hi: number } | null;

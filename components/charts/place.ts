@@ -35,6 +35,22 @@ export function placePosts(posts: readonly PostSizes[], end: number): PlacedPost
   });
 }
 
+export interface Stretch {
+  from: number;
+  to: number;
+}
+
+/** Right end of words of that width, as far right as they cover nothing that is taken; null where they fit nowhere. */
+export function rightmostRoom(width: number, { from, to }: Stretch, taken: readonly Stretch[]): number | null {
+  let end = to;
+  for (const place of [...taken].sort((a, b) => b.to - a.to)) {
+    if (place.from >= end || place.to <= from) continue;
+    if (end - Math.max(place.to, from) >= width) break;
+    end = place.from;
+  }
+  return end - from >= width ? end : null;
+}
+
 export interface Label {
   x: number;
   y: number;

@@ -92,7 +92,8 @@ function pageLayout(picture: Picture, style: 'page' | 'phone'): Layout {
   const [gravityHeight, stripHeight] = phone ? [228, 58] : [336, 92];
   const under = phone ? 40 : 40;
   const fall = gravitySpan(picture, true);
-  const gravityTop = phone ? 18 : 30;
+  // A reading at the top has its figure over it.
+  const gravityTop = phone ? 24 : 30;
   const gravity = { top: gravityTop, height: gravityHeight - under - gravityTop, ...fall };
   const warmth = temperatureSpan(picture);
   const hasGas = picture.gas.length > 0;
