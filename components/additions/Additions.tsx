@@ -52,7 +52,7 @@ function Nutrients({ batchId, drink, mayLog }: Props) {
     ingredient: nutrient === 'dap' ? 'dap' : 'complex-nutrient',
     how: plan.totalG.how,
     facts: [
-      `${Math.round(100 * plan.sugarUsedShare)} % of the sugar is used. ${Math.round(plan.missingMgL)} mg/L of nitrogen is missing; ${plan.totalG.value} g in all.`,
+      `${Math.round(100 * plan.sugarUsedShare)} % of the sugar is used. ${plan.missingMgL <= 0 ? 'No nitrogen is missing.' : `${Math.round(plan.missingMgL)} mg/L of the nitrogen that it wants was not given${plan.totalG.value > 0 ? `: ${plan.totalG.value} g in all` : ''}.`}`,
       ...later.map((portion) => `${portion.grams} g at ${portion.atGravity.toFixed(3)}, with ${Math.round(100 * portion.atShare)} % of the sugar gone.`),
     ],
     cautions: plan.cautions,
@@ -170,13 +170,19 @@ function Tannin({ batchId, drink, mayLog }: Props) {
 /** Doses reckoned from what is in the vessel by the log; each is logged with one tap. */
 export function Additions({ kind, ...props }: Props & { kind: DrinkKind }) {
   return (
-    <div className="max-w-[760px]">
+    <>
       <p className="type-reason text-ink2">Your country’s law and the packet go before any figure here.</p>
-      <Nutrients {...props} />
-      <Sugar {...props} />
-      <Sulphite {...props} />
-      <Acids {...props} kind={kind} />
-      <Tannin {...props} />
-    </div>
+      <div className="max-w-[760px] wide:grid wide:max-w-none wide:grid-cols-2 wide:gap-x-12">
+        <div className="min-w-0">
+          <Nutrients {...props} />
+          <Sugar {...props} />
+          <Tannin {...props} />
+        </div>
+        <div className="min-w-0">
+          <Sulphite {...props} />
+          <Acids {...props} kind={kind} />
+        </div>
+      </div>
+    </>
   );
 }

@@ -97,18 +97,20 @@ function Loaded({ batch }: { batch: BatchBody }) {
   const judged = judgement ?? batch.assessment;
   const shown = useMemo(() => ({ ...batch, assessment: judged }), [batch, judged]);
   const footing = judgement?.footing ?? null;
+  // What has ended is looked at from its end.
+  const asOf = batch.state === 'ended' && batch.ended_at !== null ? Math.min(now, Date.parse(batch.ended_at) / 1000) : now;
   const plays = usePlays(batch, footing, now, timeZone);
   const { laid } = plays;
   const picture = useMemo(
-    () => ({ ...pictureOf({ batch: shown, series: series.series, drawn: judgement, entries: entries ?? [] }, now, timeZone), laid }),
-    [shown, series.series, judgement, entries, now, timeZone, laid],
+    () => ({ ...pictureOf({ batch: shown, series: series.series, drawn: judgement, entries: entries ?? [] }, asOf, timeZone), ended: asOf < now, laid }),
+    [shown, series.series, judgement, entries, asOf, now, timeZone, laid],
   );
   const whole = useMemo(() => wholeSpan(picture, batch.pitched_at === null ? null : Date.parse(batch.pitched_at) / 1000), [picture, batch.pitched_at]);
   const span = chosen ? within(chosen, whole) : whole;
 
   const rows = useMemo(() => (judged ? callRows(batch, judged, now, timeZone) : []), [batch, judged, now, timeZone]);
   const log = useMemo(() => logRows(entries ?? [], changes ?? []), [entries, changes]);
-  const facts = factsOf(shown, last, now, timeZone, useSurroundings(batch.id).data?.probes);
+  const facts = factsOf(shown, last, asOf, timeZone, useSurroundings(batch.id).data?.probes);
   const racked = judged?.stage === 'terminal' && (entries ?? []).some((entry) => entry.kind === 'rack');
   const vessel = vesselOf(shown, racked);
 
@@ -140,7 +142,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
   ].find(({ error }) => error !== undefined);
   const retryAll = () => [series.retry, retryJudgement, retryEntries].forEach((retry) => retry());
   const heard = batch.sensor?.last_heard_at ? Date.parse(batch.sensor.last_heard_at) / 1000 : null;
-  const day = dayOf(batch.pitched_at, now, timeZone);
+  const day = dayOf(batch.pitched_at, asOf, timeZone);
 
   return (
     <>

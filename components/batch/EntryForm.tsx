@@ -85,7 +85,11 @@ export function EntryForm({ batchId, kind, neck = '', entry, known, now, timeZon
     clientId.current ??= crypto.randomUUID();
     const made = entryOf(draft, timeZone, clientId.current);
     setErrors(made.errors ?? {});
-    return made.errors ? null : () => createEntry(batchId, made.entry);
+    if (made.errors) return null;
+    // Of several lines in one minute the last stays the last.
+    const exact = new Date().toISOString();
+    const logged = exact.slice(0, 16) === made.entry.at.slice(0, 16) ? { ...made.entry, at: exact } : made.entry;
+    return () => createEntry(batchId, logged);
   }
 
   async function send(event: FormEvent) {

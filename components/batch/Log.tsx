@@ -2,7 +2,7 @@
 
 import { useState } from 'react';
 import { WaitingRows } from '@/components/offline/WaitingRows';
-import { Photos } from '@/components/photos/Photos';
+import { AddPhoto, Photos } from '@/components/photos/Photos';
 import { Button } from '@/components/ui/Button';
 import { FilterTabs } from '@/components/ui/FilterTabs';
 import { Haze } from '@/components/ui/Haze';
@@ -109,10 +109,11 @@ function Row({ row, batchId, now, timeZone, onCorrect }: RowProps) {
             {before ? 'corrected: put it away' : 'corrected'}
           </button>
         )}
-        {entry && <Photos place={{ batch: batchId }} on={{ entry: entry.id }} />}
+        {entry && <Photos adding={false} place={{ batch: batchId }} on={{ entry: entry.id }} />}
         {entry && before && <Corrections entry={entry} now={now} timeZone={timeZone} />}
       </div>
-      <span className="flex flex-wrap items-center justify-end gap-x-3 justify-self-end max-strip:col-span-2 max-strip:col-start-2 max-strip:row-start-2 max-strip:gap-x-5 max-strip:self-end max-strip:has-data-asked:row-start-3 strip:col-start-4">
+      <span className="flex flex-wrap items-center justify-end gap-x-3 justify-self-end max-strip:col-span-2 max-strip:col-start-2 max-strip:row-start-3 max-strip:gap-x-5 strip:col-start-4">
+        {entry && <AddPhoto place={{ batch: batchId }} on={{ entry: entry.id }} />}
         {row.mine && entry && isLogged(entry.kind) && (
           <button type="button" className={SMALL} onClick={() => onCorrect(entry)}>
             correct

@@ -25,7 +25,7 @@ function nearest(at: number, times: readonly number[], values: readonly (number 
 
 export function cursorLine(picture: Picture, at: number | null, timeZone: string): CursorLine {
   const time = at ?? picture.now;
-  const said = at === null || Math.abs(at - picture.now) < 60 ? clock(time, timeZone) : `${dayName(time, timeZone)} ${clock(time, timeZone)}`;
+  const said = !picture.ended && (at === null || Math.abs(at - picture.now) < 60) ? clock(time, timeZone) : `${dayName(time, timeZone)} ${clock(time, timeZone)}`;
   if (time > picture.now || (picture.silentAt !== null && time > picture.silentAt + NEAR_S)) {
     const foreseen = valueAt(picture.curve, time);
     return { time: said, figures: foreseen ? `${gravityText(foreseen.gravity)}, 8 in 10 ${gravityText(foreseen.lo)}–${gravityText(foreseen.hi)}` : 'not foreseen' };

@@ -8,14 +8,14 @@ import { CLARITY_WORDS, FOAM_WORDS, NECK_WORDS, SUBSTANCE_WORDS } from './words'
 const sentence = (text: string) => `${text.charAt(0).toUpperCase()}${text.slice(1)}.`;
 const listed = (parts: readonly string[]) => (parts.length > 1 ? `${parts.slice(0, -1).join(', ')} and ${parts.at(-1)}` : (parts[0] ?? ''));
 
-/** `Added 120 g sugar and 0.3 L at 1.031.` */
+/** `Added 120 g of sugar and 0.3 L at 1.031.` */
 function additionWords(entry: EntryBody): string {
   const { detail } = entry;
   const what = detail?.name ?? (detail?.substance && detail.substance !== 'other' ? SUBSTANCE_WORDS[detail.substance] : null);
-  const liquid = entry.volume_l ? `${litres(entry.volume_l)} ${what ?? 'liquid'}${entry.gravity === null ? '' : ` at ${gravityText(entry.gravity)}`}` : null;
+  const liquid = entry.volume_l ? `${litres(entry.volume_l)} of ${what ?? 'liquid'}${entry.gravity === null ? '' : ` at ${gravityText(entry.gravity)}`}` : null;
   // Sugar that was reckoned from what was weighed stands behind it.
-  const weighed = detail?.grams && !(detail.substance === 'sugar' || detail.substance === 'fruit') ? `${grams(detail.grams)} ${what ?? 'of something'}${entry.sugar_g ? ` (${grams(entry.sugar_g)} sugar)` : ''}` : null;
-  const parts = [weighed, !weighed && entry.sugar_g ? `${grams(entry.sugar_g)} sugar` : null, entry.fruit_g ? `${grams(entry.fruit_g)} fruit` : null, liquid].filter((part) => part !== null);
+  const weighed = detail?.grams && !(detail.substance === 'sugar' || detail.substance === 'fruit') ? `${grams(detail.grams)} of ${what ?? 'something'}${entry.sugar_g ? ` (${grams(entry.sugar_g)} of sugar)` : ''}` : null;
+  const parts = [weighed, !weighed && entry.sugar_g ? `${grams(entry.sugar_g)} of sugar` : null, entry.fruit_g ? `${grams(entry.fruit_g)} of fruit` : null, liquid].filter((part) => part !== null);
   if (parts.length > 0) return `Added ${listed(parts)}.`;
   return what ? `Added ${what}.` : 'Something added.';
 }

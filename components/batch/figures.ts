@@ -9,7 +9,8 @@ export { gravityText, typedNumber };
 export const degrees = (value: number): string => temperatureText(value);
 export const percent = (value: number): string => `${value.toFixed(1)} %`;
 export const litres = (value: number): string => volumeText(value);
-export const grams = (value: number): string => (value >= 10_000 ? `${Number((value / 1000).toFixed(1))} kg` : `${Number(value.toFixed(0))} g`);
+/** A pinch has its own places: `0.4 g` is not nothing. */
+export const grams = (value: number): string => (value >= 10_000 ? `${Number((value / 1000).toFixed(1))} kg` : `${Number(value.toFixed(value < 1 ? 2 : value < 10 ? 1 : 0))} g`);
 
 export function points(value: number): string {
   const text = Math.abs(value) >= 9.95 ? value.toFixed(0) : value.toFixed(1).replace(/\.0$/, '');

@@ -35,7 +35,8 @@ export function BenchForm({ draft, errors, facts, onChange }: { draft: BenchDraf
           className="col-span-2"
           label="warmest since it finished"
           value={draft.warmestSinceEnd}
-          error={errors.warmest_since_end_c}
+          // What nobody has been asked yet is no fault of theirs.
+          error={draft.warmestSinceEnd === '' ? undefined : errors.warmest_since_end_c}
           hint={measured === null ? 'No sensor measured it. If in doubt, say it colder: cold drink holds more gas.' : <Sentence>{`The sensor measured ${measured.toFixed(1)} °C; the colder of the two is used.`}</Sentence>}
           onChange={(event) => onChange({ warmestSinceEnd: event.target.value })}
         />

@@ -10,6 +10,12 @@ import { ratedBar, STILL_LIMIT_BAR } from '@/lib/core/bottling/judge';
 /** Highest bar that the picture's scale shows: an even number with air above all that is drawn. */
 export const scaleTop = (bottle: BottlePicture): number => Math.max(4, 2 * Math.ceil((Math.max(bottle.worst.bar, limitOf(bottle)) * 1.08) / 2));
 
+/** The marks of the scale: a line each, and its figure at each that has room. */
+export function barTicks(top: number): { lines: number[]; named: number } {
+  const step = top <= 12 ? 1 : top <= 24 ? 2 : top <= 60 ? 5 : 10;
+  return { lines: Array.from({ length: Math.floor(top / step) + 1 }, (_, index) => index * step), named: step === 1 ? 2 : step === 2 ? 4 : step };
+}
+
 /** What a bottle is held against, bar. */
 export const limitOf = (bottle: BottlePicture): number => (bottle.holds.rating === 'never' ? STILL_LIMIT_BAR : ratedBar(bottle.holds.rating));
 
@@ -42,7 +48,7 @@ export function Tubes({ bottle, lows }: { bottle: BottlePicture; /** Lower ends,
   ];
   const step = (width - LEFT - 6) / 3;
   const tubeWidth = Math.min(50, step * 0.42);
-  const ticks = Array.from({ length: top + 1 }, (_, bar) => bar);
+  const ticks = barTicks(top);
   const never = bottle.holds.rating === 'never';
   return (
     <div ref={frame} className="min-w-0 font-mono">
@@ -64,10 +70,10 @@ export function Tubes({ bottle, lows }: { bottle: BottlePicture; /** Lower ends,
         <text x={LEFT - 12} y={TOP - 16} textAnchor="end" fontSize="12" fill="var(--ink2)">
           bar
         </text>
-        {ticks.map((bar) => (
+        {ticks.lines.map((bar) => (
           <g key={bar}>
             <path d={`M${LEFT} ${y(bar)}H${width}`} stroke="var(--rule)" />
-            {bar % 2 === 0 && Math.abs(y(bar) - y(limit)) > 16 && (
+            {bar % ticks.named === 0 && Math.abs(y(bar) - y(limit)) > 16 && (
               <text x={LEFT - 12} y={y(bar) + 4} textAnchor="end" fontSize="12" fill="var(--ink2)">
                 {bar}
               </text>
@@ -87,9 +93,6 @@ export function Tubes({ bottle, lows }: { bottle: BottlePicture; /** Lower ends,
               {over && <rect x={left} y={y(tube.bar)} width={tubeWidth} height={y(limit) - y(tube.bar)} fill={`url(#${id}s)`} />}
               <path d={`M${left} ${y(tube.bar)}h${tubeWidth}`} stroke={over ? 'var(--madder)' : 'var(--ink)'} strokeWidth="2" />
               <path d={`M${left} ${TOP}V${base - 6}q0 6 6 6h${tubeWidth - 12}q6 0 6-6V${TOP}`} fill="none" stroke="var(--ink)" strokeWidth="1.7" />
-              <text x={left + tubeWidth + 6} y={y(tube.bar) + 5} fontSize="15" fontWeight="600" fill={over ? 'var(--madder)' : 'var(--ink)'} stroke="var(--sheet)" strokeWidth="4" paintOrder="stroke">
-                {tube.bar.toFixed(1)}
-              </text>
               <text x={middle} y={base + 20} textAnchor="middle" fontSize={step < 100 ? 11 : 12} fontWeight="600" fill="var(--ink)">
                 {step < 100 ? tube.name.replace('last sugar goes', 'sugar goes') : tube.name}
               </text>
@@ -100,6 +103,16 @@ export function Tubes({ bottle, lows }: { bottle: BottlePicture; /** Lower ends,
           );
         })}
         <path d={`M${LEFT - 46} ${y(limit)}H${width}`} stroke="var(--ink)" strokeWidth="2.2" />
+        {tubes.map((tube, index) => {
+          // Beside the line of what it holds, not on it.
+          const at = y(tube.bar);
+          const near = Math.abs(at - y(limit)) < 12;
+          return (
+            <text key={tube.where + index} x={LEFT + step * (index + 0.42) + tubeWidth / 2 + 6} y={near ? y(limit) + (tube.bar > limit ? -7 : 17) : at + 5} fontSize="15" fontWeight="600" fill={tube.bar > limit ? 'var(--madder)' : 'var(--ink)'} stroke="var(--sheet)" strokeWidth="4" paintOrder="stroke">
+              {tube.bar.toFixed(1)}
+            </text>
+          );
+        })}
         <rect x={LEFT - 62} y={y(limit) - 21} width="46" height="20" fill="var(--ink)" />
         <text x={LEFT - 39} y={y(limit) - 6} textAnchor="middle" fontSize="13" fontWeight="600" fill="var(--on)">
           {limit.toFixed(1)}

@@ -4,6 +4,7 @@ import { degrees } from '@/components/batch/figures';
 import { useRef } from 'react';
 import { dayName } from '@/components/charts/zone';
 import { useWidth } from '@/components/ui/width';
+import { barTicks } from './Tubes';
 import { overRatingFrom, type WeekPoint } from '@/lib/core/bottling/conditioning';
 
 const HEIGHT = 470;
@@ -22,6 +23,7 @@ export function Weeks({ points, limit, top, celsius, timeZone }: { points: reado
   const x = (at: number) => LEFT + ((width - LEFT - RIGHT) * (at - first.at)) / (last.at - first.at);
   const y = (bar: number) => TOP + (HEIGHT - TOP - FOOT) * (1 - Math.min(top, bar) / top);
   const line = (of: (point: WeekPoint) => number) => points.map((point, index) => `${index === 0 ? 'M' : 'L'}${x(point.at).toFixed(1)} ${y(of(point)).toFixed(1)}`).join('');
+  const ticks = barTicks(top);
   const over = overRatingFrom(points, limit);
   const day = (at: number) => dayName(at / 1000, timeZone).split(' ').slice(1).join(' ');
   const marks = points.filter((_, index) => index % 14 === 0);
@@ -35,10 +37,10 @@ export function Weeks({ points, limit, top, celsius, timeZone }: { points: reado
         role="img"
         aria-label={`From ${day(first.at)} to ${day(last.at)} at ${degrees(celsius)}: as asked up to ${last.bar.toFixed(1)} bar; if the last sugar goes up to ${last.worstBar.toFixed(1)} bar. ${over === null ? `It stays under ${limit.toFixed(1)} bar.` : `Over ${limit.toFixed(1)} bar from ${day(over)}.`}`}
       >
-        {Array.from({ length: top + 1 }, (_, bar) => (
+        {ticks.lines.map((bar) => (
           <g key={bar}>
             <path d={`M${LEFT} ${y(bar)}H${width - RIGHT}`} stroke="var(--rule)" />
-            {bar % 2 === 0 && (
+            {bar % ticks.named === 0 && (
               <text x={LEFT - 8} y={y(bar) + 4} textAnchor="end" fontSize="12" fill="var(--ink2)">
                 {bar}
               </text>

@@ -1,7 +1,7 @@
 import { gravityNumber, temperatureSpan, temperatureText } from '@/components/ui/units';
 import { placePosts, keepClear, type Label } from './place';
 import { gravityNow, hasStopped, knownUntil, valueAt, type Bracket, type Picture } from './picture';
-import { clock, when } from './zone';
+import { clock, dayName, when } from './zone';
 import { underText } from './ground';
 import { clipToPlot, crisp, line, setText, type Mark, type View } from './view';
 
@@ -53,8 +53,12 @@ export const rings: Mark = (view) => {
   const width = context.measureText('1.000').width;
   const pitch = picture.posts.find((post) => post.letters === 'P')?.at;
   const named = layout.short && pitch !== undefined ? shown.filter((item) => Math.abs(item.at - pitch) > AT_PITCH_S) : shown;
-  const labels = named.map((item): Label => ({ ...ringLabel(view, item, width), width, height: 13 }));
   const nowX = view.x(picture.now);
+  const labels = named.map((item): Label => {
+    const label = { ...ringLabel(view, item, width), width, height: 13 };
+    // Left of the line of now rather than on it.
+    return label.x < nowX && label.x + width > nowX - 3 ? { ...label, x: nowX - width - 5 } : label;
+  });
   const taken: Label[] = [{ x: nowX - 6, y: view.top, width: page ? 90 : 8, height: 18 }];
   if (picture.bracket) {
     const x = Math.max(view.left, view.x(picture.bracket.from));
@@ -82,7 +86,7 @@ export function postPlaces(view: View) {
 
 /** On a page the letters stand under the bed, with their words; in a lane on the bed, or hanging where it lies flat. */
 export const posts: Mark = (view) => {
-  const { context, palette, top, bottom } = view;
+  const { context, palette, layout, top, bottom } = view;
   const page = isPage(view);
   const { size, shown, placed, bedY } = postPlaces(view);
   for (const place of placed) {
@@ -222,7 +226,7 @@ export const nowLine = (timeZone: string): Mark => (view) => {
     context.lineWidth = 1.5;
     line(context, [[x, top], [x, bottom]]);
     if (page) {
-      const words = `now ${clock(picture.now, timeZone)}`;
+      const words = picture.ended ? `ended ${dayName(picture.now, timeZone)}` : `now ${clock(picture.now, timeZone)}`;
       setText(view, palette.ink, 600);
       const width = context.measureText(words).width + 14;
       const left = Math.min(x - 0.75, view.right - width);

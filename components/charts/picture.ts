@@ -44,6 +44,8 @@ export interface Laid {
 
 export interface Picture {
   now: number;
+  /** The batch is over, and `now` is when it ended. */
+  ended?: boolean;
   /** Parallel columns, ascending in time. */
   readings: { at: readonly number[]; gravity: readonly (number | null)[]; temperature: readonly (number | null)[] };
   /** Fit up to now and forecast after it. */
@@ -119,6 +121,6 @@ export function wholeSpan(picture: Picture, pitchedAt: number | null): Span {
   const ends = [picture.likelyEnd?.hi, ...(picture.laid ?? []).map((laid) => laid.end?.hi)].filter((end) => end !== undefined);
   const wanted = Math.max(foreseen, ...ends.map((end) => end - picture.now + DAY));
   // Room right of now for its figures, however long the past.
-  const ahead = Math.max(3 * DAY, past * 0.16, Math.min(wanted, past, 21 * DAY));
+  const ahead = picture.ended ? Math.max(DAY, past * 0.12) : Math.max(3 * DAY, past * 0.16, Math.min(wanted, past, 21 * DAY));
   return { from: start - (past + ahead) * 0.025, to: picture.now + ahead };
 }

@@ -52,16 +52,20 @@ export function Results({ items }: { items: readonly Compared[] }) {
               <th scope="row" className="type-label py-1.5 pl-(--margin) pr-4 text-left font-medium text-ink2">strength</th>
               {items.map(({ batch, result }) => (
                 <td key={batch.id} className="py-1.5 pr-5">
-                  <span className="font-mono text-[0.875rem] font-semibold">{result.abv_percent === null ? 'not known' : percent(result.abv_percent)}</span>
-                  {result.how && <How how={result.how} of={`strength of ${batch.name}`} />}
+                  <div className="flex flex-wrap items-baseline gap-x-4">
+                    <span className="font-mono text-[0.875rem] font-semibold">{result.abv_percent === null ? 'not known' : percent(result.abv_percent)}</span>
+                    {result.how && <How how={result.how} of={`strength of ${batch.name}`} className="open:basis-full" />}
+                  </div>
                 </td>
               ))}
             </tr>
             {rows.map((row) => (
               <tr key={row.name} className="border-b border-rule align-baseline">
                 <th scope="row" className="type-label py-1.5 pl-(--margin) pr-4 text-left font-medium text-ink2">
-                  {row.name}
-                  {row.how && <How how={row.how} of={row.name} className="max-w-56" />}
+                  <div className="flex flex-wrap items-baseline justify-between gap-x-4">
+                    {row.name}
+                    {row.how && <How how={row.how} of={row.name} className="max-w-56 open:basis-full" />}
+                  </div>
                 </th>
                 {items.map((item) => (
                   <td key={item.batch.id} className="py-1.5 pr-5 font-mono text-[0.875rem] font-semibold">

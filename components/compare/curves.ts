@@ -88,11 +88,20 @@ export function curveOf(item: Compared, measure: Measure, colour: string): Curve
 
 /** The same batch with the readings of a part of it in the place of the few that the whole had there. */
 export function closer(item: Compared, near: Compared | undefined): Compared {
-  const [from, to] = [near?.hours[0], near?.hours.at(-1)];
-  if (!near || from === undefined || to === undefined) return item;
-  const [before, after] = [item.hours.findIndex((hour) => hour >= from), item.hours.findIndex((hour) => hour > to)];
-  const spliced = <T>(of: (one: Compared) => T[]): T[] => [...of(item).slice(0, before === -1 ? item.hours.length : before), ...of(near), ...(after === -1 ? [] : of(item).slice(after))];
-  return { ...item, hours: spliced((one) => one.hours), gravity: spliced((one) => one.gravity), temperature: spliced((one) => one.temperature) };
+  if (!near) return item;
+  return { ...item, ...closerReadings(item, near), curve: spliced(item.curve, near.curve) };
+}
+
+/** Points of a part in place of those that lie between its ends. */
+function spliced<P extends { hour: number }>(whole: P[], part: P[]): P[] {
+  const [from, to] = [part[0]?.hour, part.at(-1)?.hour];
+  return from === undefined || to === undefined ? whole : [...whole.filter(({ hour }) => hour < from), ...part, ...whole.filter(({ hour }) => hour > to)];
+}
+
+function closerReadings(item: Compared, near: Compared): Pick<Compared, 'hours' | 'gravity' | 'temperature'> {
+  const rows = ({ hours, gravity, temperature }: Compared) => hours.map((hour, index) => ({ hour, gravity: gravity[index] ?? null, temperature: temperature[index] ?? null }));
+  const all = spliced(rows(item), rows(near));
+  return { hours: all.map((row) => row.hour), gravity: all.map((row) => row.gravity), temperature: all.map((row) => row.temperature) };
 }
 
 /** Days at which the table tells every batch, as far as the longest goes. */

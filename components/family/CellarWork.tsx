@@ -55,7 +55,7 @@ const SULPHITE_SO_FAR: HowAnswer = how('all sulphite that the must brought and t
 function InIt({ drink }: { drink: DrinkBody }) {
   const facts = [
     { name: 'in it', says: litres(drink.volume_l), how: VOLUME_BY_LOG },
-    { name: 'original gravity', says: drink.effective_og === null ? 'not told' : gravityText(drink.effective_og), how: drink.effective_og === null ? undefined : drink.effective_og === drink.original_gravity ? AS_TOLD : WITH_ADDITIONS(drink) },
+    { name: drink.effective_og === drink.original_gravity ? 'original gravity' : 'original gravity, all counted', says: drink.effective_og === null ? 'not told' : gravityText(drink.effective_og), how: drink.effective_og === null ? undefined : drink.effective_og === drink.original_gravity ? AS_TOLD : WITH_ADDITIONS(drink) },
     { name: 'gravity', says: drink.gravity === null ? 'not read' : `${gravityText(drink.gravity)}${drink.gravity_by ? ` by ${drink.gravity_by}` : ''}`, how: drink.gravity === null ? undefined : GRAVITY_BY(drink) },
     { name: 'strength', says: drink.strength ? percent(drink.strength.balling.value.value) : 'not known', how: drink.strength?.balling.how },
     { name: 'temperature', says: drink.temperature_c === null ? 'not told' : degrees(drink.temperature_c), how: drink.temperature_c === null ? undefined : LAST_TOLD },

@@ -92,7 +92,7 @@ export function CataloguePage() {
         <EmptyState title="Nothing has that name">{write ? 'Add it as your own.' : 'A brewer can add it.'}</EmptyState>
       ) : (
         <>
-          {ingredients.length > 0 && <CatalogueHead />}
+          {ingredients.length > 0 && <CatalogueHead of="ingredients" />}
           {INGREDIENT_KINDS.map((kind) => {
             const items = ingredients.filter((item) => item.kind === kind);
             return (
@@ -113,6 +113,7 @@ export function CataloguePage() {
           {yeasts.length > 0 && (
             <section aria-label="Yeasts">
               <GroupBar word="Yeasts" note={`${yeasts.length}`} />
+              <CatalogueHead of="yeasts" />
               <ul>
                 {yeasts.map((item) => (
                   <YeastRow key={item.id ?? item.name} item={item}>

@@ -27,13 +27,11 @@ function Figure({ name, says }: { name: string; says: string | null }) {
 }
 
 /** Over the columns of a wide page; on a narrow one each figure has its name beside it. */
-export const CatalogueHead = () => (
+export const CatalogueHead = ({ of }: { of: 'ingredients' | 'yeasts' }) => (
   <div aria-hidden className={`type-label hidden gap-x-4 border-b bg-desk px-(--margin) py-1 text-ink2 wide:grid ${COLUMNS}`}>
-    <span>name</span>
-    <span>sugar</span>
-    <span>of it ferments</span>
-    <span>nitrogen</span>
-    <span>what else</span>
+    {['name', ...(of === 'yeasts' ? ['bears', 'works at', 'need of nitrogen'] : ['sugar', 'of it ferments', 'nitrogen']), 'what else'].map((name) => (
+      <span key={name}>{name}</span>
+    ))}
   </div>
 );
 
@@ -66,7 +64,7 @@ function holdsOf(item: Ingredient): string {
   return [
     item.releases_over_days && `gives it up in ${ends(item.releases_over_days, 0)} days`,
     item.mash && `mashed, ${ends(times(item.mash.efficiency, 100), 0)} % of it`,
-    item.each && `a ${item.each.name} is ${ends(item.each.grams, item.each.grams.hi < 10 ? 2 : 0)} g`,
+    item.each && `a ${item.each.name} is ${ends(item.each.grams, item.each.grams.hi < 1 ? 2 : item.each.grams.hi < 10 ? 1 : 0).replaceAll('.0', '')} g`,
     item.preservative && (item.preservative === 'unknown' ? 'a preservative' : item.preservative),
     item.allergens.length > 0 && `holds ${item.allergens.join(', ')}`,
   ]

@@ -17,10 +17,29 @@ import type { MustList as Musts } from '@/lib/contracts/musts';
 import { answersOfMust } from './answers';
 import { DRINK_WORDS, ends } from './words';
 
+const COLUMNS = 'strip:grid-cols-[minmax(0,1fr)_9rem_9rem_7rem_9rem]';
+
+/** Over the columns of a wide page. */
+const Head = () => (
+  <div aria-hidden className="type-label hidden border-b bg-desk text-ink2 strip:flex">
+    <div className={`grid min-w-0 flex-1 gap-x-6 px-(--margin) py-1 ${COLUMNS}`}>
+      <span>sheet</span>
+      <span>original gravity</span>
+      <span>strength</span>
+      <span>volume</span>
+      <span className="text-right">changed</span>
+    </div>
+    <span className="invisible pr-(--margin)">how?</span>
+  </div>
+);
+
+/** Nothing where the ends are the figure itself. */
+const unless = (said: string, same: string) => (said === same ? null : said);
+
 function Row({ must, timeZone }: { must: Musts['items'][number]; timeZone: string }) {
   return (
     <li className="flex items-center border-b hover:bg-desk">
-      <Link href={`/musts/${must.id}`} className="grid min-h-14 min-w-0 flex-1 grid-cols-[minmax(0,1fr)_auto] items-baseline gap-x-6 gap-y-0.5 px-(--margin) py-2.5 no-underline strip:grid-cols-[minmax(0,1fr)_9rem_9rem_7rem_9rem]">
+      <Link href={`/musts/${must.id}`} className={`grid min-h-14 min-w-0 flex-1 grid-cols-[minmax(0,1fr)_auto] items-baseline gap-x-6 gap-y-0.5 px-(--margin) py-2.5 no-underline ${COLUMNS}`}>
         <div className="min-w-0">
           <p className="type-name break-words">{must.name}</p>
           <p className="type-label text-ink2">
@@ -29,8 +48,8 @@ function Row({ must, timeZone }: { must: Musts['items'][number]; timeZone: strin
             {must.change_note && `: ${must.change_note}`}
           </p>
         </div>
-        <p className="text-right font-mono text-[0.9375rem] font-semibold strip:text-left">{must.original_gravity ? gravityText(must.original_gravity.value) : ''}<span className="type-label block text-ink2">{must.original_gravity ? gravityEnds(must.original_gravity) : 'not reckoned yet'}</span></p>
-        <p className="font-mono text-[0.9375rem] font-semibold max-strip:hidden">{must.abv_percent && `${must.abv_percent.value.toFixed(1)} %`}<span className="type-label block text-ink2">{must.abv_percent && ends(must.abv_percent, 1)}</span></p>
+        <p className="text-right font-mono text-[0.9375rem] font-semibold strip:text-left">{must.original_gravity ? gravityText(must.original_gravity.value) : ''}<span className="type-label block text-ink2">{must.original_gravity ? unless(gravityEnds(must.original_gravity), gravityText(must.original_gravity.value)) : 'not reckoned yet'}</span></p>
+        <p className="font-mono text-[0.9375rem] font-semibold max-strip:hidden">{must.abv_percent && `${must.abv_percent.value.toFixed(1)} %`}<span className="type-label block text-ink2">{must.abv_percent && unless(ends(must.abv_percent, 1), must.abv_percent.value.toFixed(1))}</span></p>
         <p className="type-label text-ink2 max-strip:hidden">{must.volume_l && volumeText(must.volume_l.value, 1)}</p>
         <p className="type-label text-right text-ink2 max-strip:hidden">
           {must.batches === 0 ? 'no batch yet' : must.batches === 1 ? '1 batch' : `${must.batches} batches`}
@@ -81,11 +100,14 @@ export function MustList() {
           {empty ? 'A sheet tells the original gravity, the strength and the foam before anything is poured.' : 'No sheet here has that name.'}
         </EmptyState>
       ) : (
+        <>
+        <Head />
         <ul>
           {musts.map((must) => (
             <Row key={must.id} must={must} timeZone={timeZone} />
           ))}
         </ul>
+        </>
       )}
       {nextCursor && (
         <Button look="quiet" className="m-(--margin)" onClick={() => setLimit(200)}>

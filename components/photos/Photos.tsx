@@ -19,20 +19,15 @@ const hangsOn = (photo: PhotoBody, on: HangOn) => ('entry' in on ? photo.entry =
 
 const altOf = (photo: PhotoBody, index: number) => photo.caption ?? `Photo ${index + 1}${photo.by ? ` by ${photo.by}` : ''}`;
 
-/** Photos of one thing: small ones in a row, large at a tap, a word to add one. */
-export function Photos({ place, on, own: byOwner = true }: PhotosProps) {
+/** A word that opens the camera or the files; the photos it adds stand where `Photos` of the same thing is. */
+export function AddPhoto({ place, on, own: byOwner = true }: PhotosProps) {
   const { may } = useMe();
-  const mayAdd = byOwner && may('entry' in on ? 'entries.create' : 'lot' in on ? 'lots.serve' : 'tastings.write');
-  const mayRemove = may('entries.remove');
   const { photos } = usePhotos(place);
   const [state, setState] = useState<'still' | 'sending'>('still');
   const [failed, setFailed] = useState<string | null>(null);
-  const [shown, setShown] = useState<string | null>(null);
   const input = useRef<HTMLInputElement>(null);
   const id = useId();
-  const own = (photos ?? []).filter((photo) => hangsOn(photo, on));
-  const open = own.find((photo) => photo.id === shown);
-  if (own.length === 0 && !mayAdd) return null;
+  if (!byOwner || !may('entry' in on ? 'entries.create' : 'lot' in on ? 'lots.serve' : 'tastings.write')) return null;
 
   async function send(files: FileList | null) {
     if (!files || files.length === 0) return;
@@ -52,7 +47,32 @@ export function Photos({ place, on, own: byOwner = true }: PhotosProps) {
   }
 
   return (
-    <div className="flex flex-wrap items-center gap-2 pt-1">
+    <>
+      <label htmlFor={id} className="type-tick relative inline-flex min-h-6 cursor-pointer items-center whitespace-nowrap text-ink3 underline decoration-rule2 underline-offset-2 hover:text-ink max-strip:min-h-11">
+        <input ref={input} id={id} type="file" accept="image/jpeg,image/png,image/webp,image/avif" multiple disabled={state === 'sending'} className="absolute inset-0 cursor-pointer opacity-0" onChange={(event) => void send(event.target.files)} />
+        {state === 'sending' ? 'keeping the photo' : photos?.some((photo) => hangsOn(photo, on)) ? 'add another photo' : 'add a photo'}
+      </label>
+      <span role="status" className="type-label text-madder">
+        {failed}
+      </span>
+    </>
+  );
+}
+
+/** Photos of one thing: small ones in a row, large at a tap, and a word to add one, unless that stands elsewhere. */
+export function Photos({ adding = true, ...props }: PhotosProps & { adding?: boolean }) {
+  const { place, on } = props;
+  const { may } = useMe();
+  const mayRemove = may('entries.remove');
+  const { photos } = usePhotos(place);
+  const [failed, setFailed] = useState<string | null>(null);
+  const [shown, setShown] = useState<string | null>(null);
+  const own = (photos ?? []).filter((photo) => hangsOn(photo, on));
+  const open = own.find((photo) => photo.id === shown);
+  if (own.length === 0 && !adding) return null;
+
+  return (
+    <div className="flex flex-wrap items-center gap-2 pt-1 empty:hidden">
       {own.map((photo, index) => (
         <button key={photo.id} type="button" className="border border-ink bg-well" onClick={() => setShown(photo.id)} aria-label={`Look at: ${altOf(photo, index)}`}>
           {/* Already small, and behind an address that ends: nothing to optimise. */}
@@ -60,12 +80,7 @@ export function Photos({ place, on, own: byOwner = true }: PhotosProps) {
           <img src={photo.small} alt="" loading="lazy" className="block h-[84px] w-[132px] object-contain" />
         </button>
       ))}
-      {mayAdd && (
-        <label htmlFor={id} className="type-tick relative inline-flex min-h-6 cursor-pointer items-center text-ink3 underline decoration-rule2 underline-offset-2 hover:text-ink max-strip:min-h-11">
-          <input ref={input} id={id} type="file" accept="image/jpeg,image/png,image/webp,image/avif" multiple disabled={state === 'sending'} className="absolute inset-0 cursor-pointer opacity-0" onChange={(event) => void send(event.target.files)} />
-          {state === 'sending' ? 'keeping the photo' : own.length > 0 ? 'add another photo' : 'add a photo'}
-        </label>
-      )}
+      {adding && <AddPhoto {...props} />}
       <span role="status" className="type-label text-madder">
         {failed}
       </span>

@@ -29,14 +29,14 @@ export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; ti
       ) : (
         <>
           <div className="flex flex-wrap items-center gap-x-6 gap-y-1 border-b px-(--margin) py-2">
-            <p className="type-fig-lg">{spreadWords(summary.score, 10)}</p>
+            {summary.count > 0 ? <p className="type-fig-lg">{spreadWords(summary.score, 10)}</p> : <p className="type-body text-ink2">Nobody has tasted it yet.</p>}
             {summary.count > 0 && <How how={HOW_TASTED} of="averages of the notes" className="open:order-last open:w-full" />}
             {mayTaste && (
               <Button className="ml-auto" onClick={() => setOpen(true)}>
                 Taste it
               </Button>
             )}
-            <dl className="type-label flex w-full flex-wrap gap-x-5 text-ink2">
+            {summary.count > 0 && <dl className="type-label flex w-full flex-wrap gap-x-5 text-ink2">
               {ASPECTS.map((aspect) => (
                 <div key={aspect}>
                   <dt className="inline">{aspect} </dt>
@@ -49,7 +49,7 @@ export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; ti
                   <dd className="inline text-ink">{count}</dd>
                 </div>
               ))}
-            </dl>
+            </dl>}
           </div>
           <ul>
             {tastings.map((tasting) => (

@@ -57,8 +57,11 @@ export async function batchesToJudge(before: Date): Promise<string[]> {
   return rows.map((row) => row.id);
 }
 
-/** The curve of the last judgement kept, as it goes over the wire; empty before the first. */
-export async function keptCurve(batchId: string): Promise<Array<{ at: string; gravity: number; lo: number; hi: number }>> {
-  const [row] = await database().query<{ curve: Array<{ at: string; gravity: number; lo: number; hi: number }> }>(`select curve from batch_states where batch_id = $batchId`, { bind: { batchId }, type: QueryTypes.SELECT });
+type KeptPoint = { at: string; gravity: number; lo: number; hi: number };
+
+/** The curve of the last judgement kept, as it goes over the wire; empty before the first. `whole`: each of its points, not those of a lane. */
+export async function keptCurve(batchId: string, { whole = false } = {}): Promise<KeptPoint[]> {
+  const curve = whole ? `coalesce(drawing -> 'curve', curve::jsonb)` : 'curve';
+  const [row] = await database().query<{ curve: KeptPoint[] }>(`select ${curve} as curve from batch_states where batch_id = $batchId`, { bind: { batchId }, type: QueryTypes.SELECT });
   return row?.curve ?? [];
 }

@@ -36,7 +36,7 @@ export interface DemoBatch {
 export const DEMO_BATCHES: readonly DemoBatch[] = [
   { scenario: 'foaming', seed: 11, tag: 1, place: 'by the sink', yeast: 'dry cider yeast', notes: [{ atH: 30, by: 'Inga Farrow', text: 'Foam in the tube this morning; jar half full, emptied.' }] },
   { scenario: 'ready-to-rack', waterDaysAgo: 4, seed: 12, tag: 2, place: 'long shelf', yeast: 'dry cider yeast', notes: [{ atH: 400, by: 'Piet Marsh', text: 'Lees have gone tight and flat. Smells clean.' }] },
-  { scenario: 'racking', waterDaysAgo: 6, seed: 13, tag: 3, place: 'long shelf', yeast: 'red wine yeast', fining: { fining: 'two-part', dose: 'a teaspoon of each', startedMinAgo: 18 } },
+  { scenario: 'racking', waterDaysAgo: 6, seed: 13, tag: 3, place: 'long shelf', yeast: 'red wine yeast', fining: { fining: 'two-part', dose: 'a teaspoon', startedMinAgo: 18 } },
   { scenario: 'finished', waterDaysAgo: 9, seed: 14, tag: 4, place: 'north wall', yeast: 'red wine yeast', notes: [{ atH: 60 * 24, by: 'Una Thorne', text: 'One can read print through it.' }], readAtH: [88 * 24, 96 * 24 - 5] },
   { scenario: 'stuck-cold', seed: 15, tag: 5, place: 'back row by the door', yeast: 'dry ale yeast', notes: [{ atH: 98, by: 'Inga Farrow', text: 'Heat mat found unplugged. Plugged back in; not sure it is warming.' }] },
   { scenario: 'silent', seed: 16, tag: 6, place: 'back row', yeast: 'white wine yeast' },

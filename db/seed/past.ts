@@ -77,7 +77,7 @@ export const DEMO_PAST: readonly DemoPast[] = [
     pitchedDaysAgo: 96,
     bottledAfterDays: 92,
     rack: { atH: 40 * 24, leftL: 0.3, topUpL: 0.25, sulphiteG: 0.3 },
-    fining: { fining: 'two-part', atH: 52 * 24, dose: 'a teaspoon of each' },
+    fining: { fining: 'two-part', atH: 52 * 24, dose: 'a teaspoon' },
     stabiliseAtH: 85 * 24,
     readAtH: [40 * 24 - 1, 66 * 24, 82 * 24, 92 * 24 - 4],
     bottling: {

@@ -150,7 +150,7 @@ export const troubled: Scenario[] = [
     events: [
       { atH: 26 * 24 - 1, kind: 'reading', text: 'Hydrometer before racking.' },
       { atH: 26 * 24, kind: 'rack', text: 'Racked off the lees into a clean demijohn.', cellsKept: 0.35, floatPoints: -3.5 },
-      { atH: 26 * 24 + 0.5, kind: 'top_up', text: 'Topped up with 300 mL of boiled, cooled water.', volumeL: 0.3, gravity: 1 },
+      { atH: 26 * 24 + 0.5, kind: 'top_up', text: 'Boiled, cooled water.', volumeL: 0.3, gravity: 1 },
       { atH: 37 * 24, kind: 'reading', text: 'Hydrometer.' },
     ],
     ageH: 40 * 24,

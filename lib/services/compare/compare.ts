@@ -39,6 +39,10 @@ function spanOf({ pitchedAt, endedAt }: Pick<Batch, 'pitchedAt' | 'endedAt'>, { 
   return { from: iso(at(from ?? 0)), ...(Number.isFinite(last) && { to: iso(last) }) };
 }
 
+/** Hours of the curve on each side of a part that is asked for. */
+const MARGIN_H = 2;
+const seconds = (at: string | undefined, hours: number): number | null => (at === undefined ? null : Date.parse(at) / 1000 + hours * HOUR_S);
+
 async function one(actor: Actor, id: string, query: z.infer<typeof compareQuery>, clock: Clock): Promise<CompareBody['items'][number]> {
   const batch = await loadBatch(actor.cellarId, id);
   const [row] = await findBatches({ cellarId: actor.cellarId, id, limit: 1 });
@@ -57,7 +61,13 @@ async function one(actor: Actor, id: string, query: z.infer<typeof compareQuery>
   const terminalAt = assessment?.stage === 'terminal' ? assessment.terminal_at?.value : undefined;
   // What has not happened is not laid beside what has.
   const until = (batch.endedAt?.getTime() ?? clock.now()) / 1000;
-  const curve = (await keptCurve(id)).map((point) => ({ at: Date.parse(point.at) / 1000, gravity: point.gravity })).filter((point) => point.at <= until);
+  const span = spanOf(batch, query);
+  const asked = query.from_hour !== undefined || query.to_hour !== undefined;
+  // Of a part each point of the curve, and a little beyond it, so that it meets the rest.
+  const [from, to] = asked ? [seconds(span.from, -MARGIN_H), seconds(span.to, MARGIN_H)] : [null, null];
+  const curve = (await keptCurve(id, { whole: asked }))
+    .map((point) => ({ at: Date.parse(point.at) / 1000, gravity: point.gravity }))
+    .filter((point) => point.at <= until && point.at >= (from ?? -Infinity) && point.at <= (to ?? Infinity));
   return {
     batch: presentBatch(row, actor),
     zero_at: zero === null ? null : iso(zero * 1000),

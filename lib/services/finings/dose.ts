@@ -28,7 +28,7 @@ export async function logDose(actor: Actor, run: FiningRun, part: 'a' | 'b' | 'o
   const fining = finingNamed(run.fining);
   const name = fining.parts[part === 'b' ? 1 : 0] ?? fining.name;
   const entry = await Entry.create(
-    { cellarId: run.cellarId, batchId: run.batchId, kind: 'fining', at, text: text ?? (dose === null ? null : `${name}, ${dose}`), detail: { substance: 'fining', name, dose: part, fining_id: run.id }, personId: actor.personId, clientId },
+    { cellarId: run.cellarId, batchId: run.batchId, kind: 'fining', at, text: text ?? (dose === null ? null : `${name.charAt(0).toUpperCase()}${name.slice(1)}, ${dose.replace(/\.$/, '')}.`), detail: { substance: 'fining', name, dose: part, fining_id: run.id }, personId: actor.personId, clientId },
     { transaction },
   );
   await notifyChange({ cellar: run.cellarId, kind: 'entry', batch: run.batchId }, transaction);

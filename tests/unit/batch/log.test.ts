@@ -62,9 +62,11 @@ describe('what goes in', () => {
   });
 
   it('is told in the log with its name and its weight', () => {
-    expect(entryWords(entry({ kind: 'addition', detail: { substance: 'nutrient', name: 'yeast food', grams: 2 } }))).toBe('Added 2 g yeast food.');
-    expect(entryWords(entry({ kind: 'addition', sugar_g: 246, detail: { substance: 'honey', ingredient: 'honey', grams: 300 } }))).toBe('Added 300 g honey (246 g sugar).');
-    expect(entryWords(entry({ kind: 'addition', volume_l: 0.5, detail: { substance: 'water' } }))).toBe('Added 0.5 L water.');
+    // A pinch of sulphite is not nothing.
+    expect(entryWords(entry({ kind: 'addition', detail: { substance: 'sulphite', grams: 0.4 } }))).toBe('Added 0.4 g of sulphite.');
+    expect(entryWords(entry({ kind: 'addition', detail: { substance: 'nutrient', name: 'yeast food', grams: 2 } }))).toBe('Added 2 g of yeast food.');
+    expect(entryWords(entry({ kind: 'addition', sugar_g: 246, detail: { substance: 'honey', ingredient: 'honey', grams: 300 } }))).toBe('Added 300 g of honey (246 g of sugar).');
+    expect(entryWords(entry({ kind: 'addition', volume_l: 0.5, detail: { substance: 'water' } }))).toBe('Added 0.5 L of water.');
     expect(entryWords(entry({ kind: 'observation', detail: { foam: 'at_neck', clarity: 'cloudy', bubbles_per_minute: 40, ph: 3.4, taste: 'sharp.' } }))).toBe('Foam at the neck. Cloudy. 40 bubbles a minute. pH 3.40. Taste: sharp.');
     expect(entryWords(entry({ kind: 'reading', gravity: 1.052, gravity_read: 1.052, detail: { as_original_gravity: true } }))).toBe('Hydrometer. Taken for the original gravity.');
   });

@@ -57,7 +57,7 @@ describe('the log', () => {
   });
 
   it('lists what went in as one sentence', () => {
-    expect(entryWords(entry({ kind: 'addition', sugar_g: 120, fruit_g: 500, volume_l: 0.3, gravity: 1.031 }))).toBe('Added 120 g sugar, 500 g fruit and 0.3 L liquid at 1.031.');
+    expect(entryWords(entry({ kind: 'addition', sugar_g: 120, fruit_g: 500, volume_l: 0.3, gravity: 1.031 }))).toBe('Added 120 g of sugar, 500 g of fruit and 0.3 L of liquid at 1.031.');
   });
 
   it('leaves the person’s own words alone where ours would add no figure', () => {
