@@ -61,7 +61,7 @@ type KeptPoint = { at: string; gravity: number; lo: number; hi: number };
 
 /** The curve of the last judgement kept, as it goes over the wire; empty before the first. `whole`: each of its points, not those of a lane. */
 export async function keptCurve(batchId: string, { whole = false } = {}): Promise<KeptPoint[]> {
-  const curve = whole ? `coalesce(drawing -> 'curve', curve::jsonb)` : 'curve';
+  const curve = whole ? `coalesce((drawing -> 'curve')::json, curve::json)` : 'curve';
   const [row] = await database().query<{ curve: KeptPoint[] }>(`select ${curve} as curve from batch_states where batch_id = $batchId`, { bind: { batchId }, type: QueryTypes.SELECT });
   return row?.curve ?? [];
 }

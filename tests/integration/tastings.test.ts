@@ -1,4 +1,6 @@
 import { describe, expect, it } from 'vitest';
+import { inTransaction } from '@/db/client';
+import { saveBatchState } from '@/db/queries/batch-states';
 import { createShare as shareForm } from '@/lib/contracts/shares';
 import { createTasting as tastingForm, guestTasting } from '@/lib/contracts/tastings';
 import { ForbiddenError, NotFoundError, ThrottledError } from '@/lib/errors';
@@ -154,6 +156,12 @@ describe('batches laid over each other', () => {
     expect(items[1]!.by_hand.map((item) => item.hour)).toEqual([31 * 24, 957.6]);
     const { items: near } = await compareBatches(brewer, { batches: [late.id, early.id], points: 100, from_hour: 12, to_hour: 30 });
     expect(near.map((item) => item.hours)).toEqual([[24], [24]]);
+    // Of a part each point that was judged, of the whole those that a lane has.
+    const point = (h: number) => ({ at: isoAt(late.pitchedAt!.getTime() + h * HOUR), gravity: 1.048, lo: 1.047, hi: 1.049 });
+    await inTransaction((transaction) => saveBatchState({ batchId: late.id, cellarId: brewer.cellarId, at: new Date(NOON), assessment: {}, curve: [point(0), point(96)], expected: [], drawing: { curve: Array.from({ length: 97 }, (_, h) => point(h)) } }, transaction));
+    const curveHours = async (more: object) => (await compareBatches(brewer, { batches: [late.id], points: 100, ...more })).items[0]!.curve.map((item) => item.hour);
+    expect(await curveHours({})).toEqual([0, 96]);
+    expect(await curveHours({ from_hour: 12, to_hour: 14 })).toEqual([10, 11, 12, 13, 14, 15, 16]);
     const stranger = await buildMember('keeper');
     await expect(compareBatches(stranger, { batches: [late.id], points: 100 })).rejects.toBeInstanceOf(NotFoundError);
   });

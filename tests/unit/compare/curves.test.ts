@@ -56,6 +56,8 @@ describe('a curve of the comparison', () => {
     expect(closer(compared(), undefined)).toEqual(compared());
     const last = compared({ hours: [40, 48, 60], gravity: [1.015, 1.01, 1.009], temperature: [20, 20, 20] });
     expect(closer(compared(), last).hours).toEqual([0, 24, 40, 48, 60]);
+    const judged = (hours: number[]) => compared({ curve: hours.map((hour) => ({ hour, gravity: 1.05 - hour / 2000 })) });
+    expect(closer(judged([0, 24, 48]), judged([20, 21, 22, 23, 24, 25])).curve.map(({ hour }) => hour)).toEqual([0, 20, 21, 22, 23, 24, 25, 48]);
   });
 
   it('says nothing before and after a curve', () => {
