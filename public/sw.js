@@ -244,7 +244,7 @@ worker.addEventListener('message', (/** @type {any} */ event) => {
 });
 
 worker.addEventListener('push', (/** @type {any} */ event) => {
-  /** @type {{ title?: string, body?: string, url?: string, tag?: string, alert?: string | null, urgent?: boolean }} */
+  /** @type {{ title?: string, body?: string, url?: string, tag?: string, alert?: string | null, take?: string, lang?: string, urgent?: boolean }} */
   let notice = {};
   try {
     notice = event.data?.json() ?? {};
@@ -255,12 +255,13 @@ worker.addEventListener('push', (/** @type {any} */ event) => {
     worker.registration.showNotification(notice.title ?? 'Fallbright', {
       body: notice.body ?? 'Look at the alerts.',
       tag: notice.tag,
+      lang: notice.lang,
       renotify: notice.tag !== undefined,
       requireInteraction: notice.urgent === true,
       icon: '/icon-192.png',
       badge: '/badge-96.png',
       data: { url: notice.url ?? '/alerts', alert: notice.alert ?? null },
-      actions: notice.alert ? [{ action: 'take', title: 'I have it' }] : [],
+      actions: notice.alert ? [{ action: 'take', title: notice.take ?? 'I have it' }] : [],
     }),
   );
 });

@@ -10,8 +10,9 @@ import { ErrorState, FormError } from '@/components/ui/Notice';
 import { GroupBar } from '@/components/ui/Page';
 import { useAct } from '@/components/ui/use-act';
 import { updateMe, useMe } from '@/lib/client/me';
-import { LOCALES, type MeBody } from '@/lib/contracts/people';
+import type { MeBody } from '@/lib/contracts/people';
 import type { GravityUnit, TemperatureUnit, VolumeUnit } from '@/lib/core/units/chosen';
+import { LANGUAGES, LOCALES, type Locale } from '@/lib/texts/languages';
 import { DeleteAccount } from './DeleteAccount';
 import { TimeZoneField } from './TimeZoneField';
 
@@ -29,8 +30,6 @@ const VOLUMES: readonly { value: VolumeUnit; name: string }[] = [
   { value: 'us_gal', name: 'US gal' },
   { value: 'imp_gal', name: 'imp gal' },
 ];
-/** Each tongue by its own name. */
-const LOCALE_NAMES: Record<(typeof LOCALES)[number], string> = { en: 'English' };
 
 function ProfileForm({ person }: { person: MeBody['person'] }) {
   const { busy, failed, fields, act } = useAct();
@@ -50,10 +49,10 @@ function ProfileForm({ person }: { person: MeBody['person'] }) {
       <div className="flex flex-wrap gap-3">
         <Field label="name" value={name} maxLength={80} autoComplete="name" error={fields.name} hint="as others see it in the log" className="flex-1 basis-56 strip:max-w-80" onChange={(event) => setName(event.target.value)} />
         <TimeZoneField value={zone} onChoose={setZone} error={fields.time_zone} hint="for quiet hours and your own mails" className="flex-1 basis-56 strip:max-w-80" />
-        <Select label="language" value={locale} className="w-40 max-strip:w-full" onChange={(event) => setLocale(event.target.value as (typeof LOCALES)[number])}>
+        <Select label="language" value={locale} hint="of your mails and notices; screens are English" className="w-56 max-strip:w-full" onChange={(event) => setLocale(event.target.value as Locale)}>
           {LOCALES.map((item) => (
             <option key={item} value={item}>
-              {LOCALE_NAMES[item]}
+              {LANGUAGES[item].name}
             </option>
           ))}
         </Select>

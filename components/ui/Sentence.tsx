@@ -1,4 +1,4 @@
-import { splitFigures } from './figures';
+import { splitFigures } from '@/lib/core/units/figures';
 import { figureRead } from './units';
 
 /** A sentence in prose with its figures typed in, in the units that the person reads. `strong` inside a verdict. */

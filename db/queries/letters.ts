@@ -25,6 +25,10 @@ export interface ClaimedLetter {
   dedupeKey: string;
   email: string;
   name: string;
+  /** What the reader of the address reads now; where nobody has it, what whoever invites them reads. */
+  locale: string | null;
+  /** Null: no account has the address. */
+  timeZone: string | null;
   payload: unknown;
   attempts: number;
   refusals: number;
@@ -34,13 +38,19 @@ export interface ClaimedLetter {
 /** Takes the letter that is due first; nobody else takes it until the lease ends. */
 export async function claimLetter(now: Date, leaseUntil: Date): Promise<ClaimedLetter | null> {
   const [row] = await database().query<ClaimedLetter>(
-    `update letters set leased_until = $leaseUntil, attempts = attempts + 1
-     where id = (
+    `with due as (
        select id from letters
        where sent_at is null and failed_at is null and next_attempt_at <= $now and (leased_until is null or leased_until <= $now)
        order by next_attempt_at, id limit 1 for update skip locked
+     ), taken as (
+       update letters l set leased_until = $leaseUntil, attempts = attempts + 1 from due where l.id = due.id returning l.*
      )
-     returning id, dedupe_key as "dedupeKey", to_email as email, to_name as name, payload, attempts, refusals, created_at as "createdAt"`,
+     select l.id, l.dedupe_key as "dedupeKey", l.to_email as email, l.to_name as name, l.payload, l.attempts, l.refusals, l.created_at as "createdAt",
+       p.time_zone as "timeZone", coalesce(p.locale, host.locale, l.payload->>'locale') as locale
+     from taken l
+     left join people p on p.id = l.person_id or (l.person_id is null and lower(p.email) = lower(l.to_email))
+     left join invitations i on i.id::text = l.payload->>'invitation'
+     left join people host on host.id = i.invited_by`,
     { bind: { now, leaseUntil }, type: QueryTypes.SELECT },
   );
   return row ?? null;

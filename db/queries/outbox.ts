@@ -1,5 +1,6 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import type { HeldBy, MeansName } from '../../lib/core/alerts/telling';
+import type { ChosenUnits } from '../../lib/core/units/chosen';
 import { database } from '../client';
 
 export interface Owed {
@@ -71,6 +72,9 @@ export interface Claimed {
   name: string;
   email: string;
   timeZone: string;
+  /** The language and the units that the person reads now. */
+  locale: string;
+  units: ChosenUnits;
   /** The person's quiet hours, minutes after midnight. */
   quietFrom: number | null;
   quietTo: number | null;
@@ -101,7 +105,7 @@ export function claimForOnePerson(now: Date, leaseUntil: Date, most: number): Pr
      from taken, people p left join message_times t on t.person_id = p.id
      where o.id = taken.id and p.id = o.person_id
      returning o.id, o.means, o.dedupe_key as "dedupeKey", o.alert_id as "alertId", o.payload, o.attempts, o.refusals, o.created_at as "createdAt", o.held_by as "heldBy",
-       p.id as "personId", p.name, p.email, p.time_zone as "timeZone", t.quiet_from as "quietFrom", t.quiet_to as "quietTo",
+       p.id as "personId", p.name, p.email, p.time_zone as "timeZone", p.locale, json_build_object('gravity', p.gravity_unit, 'temperature', p.temperature_unit, 'volume', p.volume_unit) as units, t.quiet_from as "quietFrom", t.quiet_to as "quietTo",
        (select max(m.until_at) from mutes m join alerts a on a.batch_id = m.batch_id where a.id = o.alert_id and m.ended_at is null and m.until_at > $now) as "mutedUntil",
        (o.cellar_id is null or exists (select 1 from memberships m where m.cellar_id = o.cellar_id and m.person_id = o.person_id and m.role <> 'guest')) as "stillThere"`,
     { bind: { now, leaseUntil, most }, type: QueryTypes.SELECT },

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { ROLES } from '../core/roles';
 import { GRAVITY_UNITS, TEMPERATURE_UNITS, VOLUME_UNITS } from '../core/units/chosen';
+import { LOCALES } from '../texts/languages';
 import { id, line, pageQuery, timestamp } from './common';
 
 export { ROLES, type Role } from '../core/roles';
@@ -40,9 +41,6 @@ export const timeZone = z.string().max(64).refine((value) => {
 
 /** An ISO 4217 currency that this machine knows. */
 export const currency = z.string().refine((value) => Intl.supportedValuesOf('currency').includes(value), 'is not a currency, such as EUR');
-
-/** The tongues that the texts exist in. */
-export const LOCALES = ['en'] as const;
 
 export const unitsSchema = z.object({ gravity: z.enum(GRAVITY_UNITS), temperature: z.enum(TEMPERATURE_UNITS), volume: z.enum(VOLUME_UNITS) });
 

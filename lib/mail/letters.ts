@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import type { Texts } from '../texts/texts';
 
 /**
  * A letter: a mail about somebody's account or an invitation, to one address.
@@ -33,6 +34,8 @@ const noticeLetter = z.object({
   time_zone: z.string(),
   /** The cellar or the address it is about. */
   about: z.string().nullable(),
+  /** What the person read when it was owed: their account may be gone when it is written. */
+  locale: z.string().optional(),
 });
 
 export const letterPayload = z.discriminatedUnion('template', [invitationLetter, linkLetter, noticeLetter]);
@@ -44,6 +47,10 @@ export type NoticeLetter = z.infer<typeof noticeLetter>;
 export interface LetterContext {
   /** Where links lead, without a slash at the end. */
   publicUrl: string;
+  /** The reader's language and units. */
+  texts: Texts;
+  /** The reader's own zone; absent where no account tells it. */
+  timeZone?: string | null;
   /** The link's token; empty where the letter has none. */
   token: string;
 }

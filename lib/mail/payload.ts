@@ -1,4 +1,6 @@
 import { z } from 'zod';
+import { STATE_WORDS } from '../core/calls/attention';
+import type { Texts } from '../texts/texts';
 
 /**
  * What a mail is made from, kept in the outbox: a copy of what was true when it
@@ -45,7 +47,19 @@ const digestPayload = z.object({
   /** The next one after today; null: none is known. */
   next_job: z.object({ title: z.string(), due: z.string() }).nullable(),
   /** What wants a person first. */
-  lanes: z.array(z.object({ id: z.string(), name: z.string(), tag: z.number().nullable(), state: z.string(), headline: z.string(), gravity: z.number().nullable() })),
+  lanes: z.array(
+    z.object({
+      id: z.string(),
+      name: z.string(),
+      tag: z.number().nullable(),
+      state: z.enum(STATE_WORDS),
+      /** Null: nothing was judged yet. */
+      headline: z.string().nullable(),
+      /** Whether the yeast is in; told where nothing was judged. */
+      pitched: z.boolean().optional(),
+      gravity: z.number().nullable(),
+    }),
+  ),
   more_lanes: z.number(),
   muted: z.array(z.object({ name: z.string(), until: z.string(), by: z.string().nullable() })),
 });
@@ -81,6 +95,8 @@ export interface Rendered {
 export interface RenderContext {
   /** Where links lead, without a slash at the end. */
   publicUrl: string;
+  /** The reader's language and units. */
+  texts: Texts;
   /** By alert: the address at which this reader takes it without signing in. */
   takeUrls?: ReadonlyMap<string, string>;
 }

@@ -1,5 +1,6 @@
-import { headerLine } from './words';
+import type { Texts } from '../texts/texts';
 import type { Rendered } from './payload';
+import { headerLine } from './words';
 
 /** The parts of a mail. Each is written once and comes out as text and as HTML. */
 export type Block =
@@ -28,7 +29,7 @@ const COLOURS = { ink: '#14201A', ink2: '#415047', madder: '#A3241C', ochre: '#7
 const ESCAPES: Record<string, string> = { '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;', "'": '&#39;' };
 export const escapeHtml = (text: string) => text.replace(/[&<>"']/g, (sign) => ESCAPES[sign]!);
 
-const FIGURE = /[−-]?\d+(?:[.:]\d+)*(?:\s(?:°C|L\/h|points\/d|points?|%|bar|hours?|h|min|days?|d|L|V)(?![\p{L}]))?/gu;
+const FIGURE = /[−-]?\d+(?:[.:]\d+)*(?:\s(?:°C|°F|°Bx|°P|gal|L\/h|points\/d|points?|%|bar|hours?|h|min|days?|d|L|V)(?![\p{L}]))?/gu;
 
 /** Escaped prose with its figures set in the figures' face. */
 function withFigures(text: string): string {
@@ -49,7 +50,7 @@ function rowsHtml({ label, rows, after }: Extract<Block, { type: 'rows' }>): str
   return `${labelHtml(label)}<table role="presentation" cellpadding="0" cellspacing="0" style="border-collapse:collapse;margin:0 0 ${after === null ? 14 : 4}px">${cells.join('')}</table>${after === null ? '' : `<p class="ink2" style="margin:0 0 14px;font:400 14px/20px ${SERIF};color:${COLOURS.ink2}">${withFigures(after)}</p>`}`;
 }
 
-function blockHtml(block: Block): string {
+function blockHtml(block: Block, { t }: Texts): string {
   switch (block.type) {
     case 'state':
       return `<p class="${block.colour}" style="margin:0 0 4px;font:560 13px/18px ${MONO};color:${COLOURS[block.colour]}">${escapeHtml(block.word)}</p>`;
@@ -69,11 +70,11 @@ function blockHtml(block: Block): string {
       return `<table role="presentation" cellpadding="0" cellspacing="0" style="border-collapse:collapse;margin:0 0 14px">${block.rows
         .map(
           (row) =>
-            `<tr><td class="ink2" style="padding:2px 16px 2px 0;font:400 14px/20px ${SERIF};color:${COLOURS.ink2}">${escapeHtml(row.name)}</td><td class="ink" style="padding:2px 16px 2px 0;font:650 14px/20px ${MONO};color:${COLOURS.ink};white-space:nowrap">${escapeHtml(row.value)}</td><td class="ink2" style="padding:2px 0;font:500 12px/20px ${MONO};color:${COLOURS.ink2};white-space:nowrap">${row.limit === null ? '' : escapeHtml(`limit ${row.limit}`)}</td></tr>`,
+            `<tr><td class="ink2" style="padding:2px 16px 2px 0;font:400 14px/20px ${SERIF};color:${COLOURS.ink2}">${escapeHtml(row.name)}</td><td class="ink" style="padding:2px 16px 2px 0;font:650 14px/20px ${MONO};color:${COLOURS.ink};white-space:nowrap">${escapeHtml(row.value)}</td><td class="ink2" style="padding:2px 0;font:500 12px/20px ${MONO};color:${COLOURS.ink2};white-space:nowrap">${row.limit === null ? '' : escapeHtml(t('mail.limit', { value: row.limit }))}</td></tr>`,
         )
         .join('')}</table>`;
     case 'caution':
-      return `<p class="ink caution" style="margin:0 0 16px;padding:8px 12px;border-left:4px solid ${COLOURS.madder};font:400 15px/21px ${SERIF};color:${COLOURS.ink}"><strong>Take care.</strong> ${withFigures(block.text)}</p>`;
+      return `<p class="ink caution" style="margin:0 0 16px;padding:8px 12px;border-left:4px solid ${COLOURS.madder};font:400 15px/21px ${SERIF};color:${COLOURS.ink}"><strong>${escapeHtml(t('mail.caution'))}</strong> ${withFigures(block.text)}</p>`;
     case 'link':
       return `<p style="margin:18px 0"><a class="button" href="${escapeHtml(block.url)}" style="display:inline-block;padding:11px 16px;border-radius:2px;background:${COLOURS.ink};color:#F4F8F0;font:560 13px/18px ${MONO};text-decoration:none">${escapeHtml(block.label)}</a></p>`;
     case 'way':
@@ -85,7 +86,7 @@ function blockHtml(block: Block): string {
   }
 }
 
-function blockText(block: Block): string {
+function blockText(block: Block, { t }: Texts): string {
   switch (block.type) {
     case 'state':
       return `[${block.word}]`;
@@ -102,9 +103,9 @@ function blockText(block: Block): string {
     case 'vessel':
       return `\n[${block.word}] ${block.text}`;
     case 'figures':
-      return `\n${block.rows.map((row) => `  ${row.name}: ${row.value}${row.limit === null ? '' : ` (limit ${row.limit})`}`).join('\n')}`;
+      return `\n${block.rows.map((row) => `  ${row.name}: ${row.value}${row.limit === null ? '' : ` (${t('mail.limit', { value: row.limit })})`}`).join('\n')}`;
     case 'caution':
-      return `\nTake care. ${block.text}`;
+      return `\n${t('mail.caution')} ${block.text}`;
     case 'link':
       return `\n${block.label}: ${block.url}`;
     case 'way':
@@ -117,11 +118,11 @@ function blockText(block: Block): string {
 /** The same ink on a dark sheet, for readers that are set to dark. */
 const NIGHT = `@media (prefers-color-scheme:dark){body,.sheet{background:#121511!important}.ink{color:#CECAB1!important}.ink2{color:#A8A58F!important}.madder{color:#E58570!important}.ochre{color:#D3A553!important}.green{color:#8DB394!important}.ruled{border-color:#545E51!important}.caution{border-color:#E58570!important}.button{background:#CECAB1!important;color:#121511!important}}`;
 
-export function render(subject: string, blocks: readonly Block[]): Rendered {
+export function render(subject: string, blocks: readonly Block[], texts: Texts): Rendered {
   const title = headerLine(subject);
   return {
     subject: title,
-    text: `${blocks.map(blockText).join('\n').trim()}\n`,
-    html: `<!doctype html><html lang="en"><head><meta charset="utf-8"><meta name="viewport" content="width=device-width"><meta name="color-scheme" content="light dark"><meta name="supported-color-schemes" content="light dark"><title>${escapeHtml(title)}</title><style>${NIGHT}</style></head><body class="sheet" style="margin:0;background:#F1F5ED"><div class="sheet" style="max-width:560px;margin:0 auto;padding:24px 20px;background:#F1F5ED"><p class="ink ruled" style="margin:0 0 20px;padding-bottom:8px;border-bottom:1.5px solid #14201A;font:700 17px/22px ${SERIF};color:${COLOURS.ink}">Fallbright</p>${blocks.map(blockHtml).join('')}</div></body></html>`,
+    text: `${blocks.map((block) => blockText(block, texts)).join('\n').trim()}\n`,
+    html: `<!doctype html><html lang="${escapeHtml(texts.lang)}"><head><meta charset="utf-8"><meta name="viewport" content="width=device-width"><meta name="color-scheme" content="light dark"><meta name="supported-color-schemes" content="light dark"><title>${escapeHtml(title)}</title><style>${NIGHT}</style></head><body class="sheet" style="margin:0;background:#F1F5ED"><div class="sheet" style="max-width:560px;margin:0 auto;padding:24px 20px;background:#F1F5ED"><p class="ink ruled" style="margin:0 0 20px;padding-bottom:8px;border-bottom:1.5px solid #14201A;font:700 17px/22px ${SERIF};color:${COLOURS.ink}">Fallbright</p>${blocks.map((block) => blockHtml(block, texts)).join('')}</div></body></html>`,
   };
 }

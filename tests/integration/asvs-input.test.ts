@@ -1,7 +1,7 @@
 import { randomBytes } from 'node:crypto';
 import sharp from 'sharp';
 import { describe, expect, it, vi } from 'vitest';
-import { splitFigures } from '@/components/ui/figures';
+import { splitFigures } from '@/lib/core/units/figures';
 import { keptText } from '@/components/units/typed';
 import { amountOf } from '@/components/musts/amount';
 import { Batch, Person, Photo } from '@/db/models';

@@ -19,6 +19,7 @@ import { sendDue } from '@/lib/services/outbox/send';
 import { ciderAt, clockAt, HOUR, isoAt, NOON } from '../support/cellar';
 import { useDatabase } from '../support/database';
 import { buildMember } from '../support/factories';
+import { english } from '../support/texts';
 
 useDatabase();
 
@@ -85,12 +86,12 @@ const timer = (name: string): TimerPayload => ({ template: 'timer', due: isoAt(N
 
 describe('what it says', () => {
   it('on a phone: what to do now, with its caution, and the rounds behind a tap', () => {
-    expect(composePush([timer('Perry')])).toMatchObject({ title: 'Now: Second dose into Perry', body: 'Perry, tag 3. Keep the order.', url: '/rounds', urgent: true });
-    expect(composePush([timer('Perry'), timer('Mead')])).toMatchObject({ body: 'Second dose into Perry\nSecond dose into Mead', urgent: true });
+    expect(composePush([timer('Perry')], english)).toMatchObject({ title: 'Now: Second dose into Perry', body: 'Perry, tag 3. Keep the order.', url: '/rounds', urgent: true });
+    expect(composePush([timer('Perry'), timer('Mead')], english)).toMatchObject({ body: 'Second dose into Perry\nSecond dose into Mead', urgent: true });
   });
 
   it('first, among other mails', () => {
-    const mail = compose([{ template: 'test', at: isoAt(NOON), time_zone: 'UTC' }, timer('Perry')], { publicUrl: 'https://barn.example' });
+    const mail = compose([{ template: 'test', at: isoAt(NOON), time_zone: 'UTC' }, timer('Perry')], { publicUrl: 'https://barn.example', texts: english });
     expect(mail.subject).toBe('Now: Second dose into Perry, and more');
     expect(mail.text).toContain('Keep the order.');
   });

@@ -1,18 +1,15 @@
-import { batchLink, cellarFoot, evidenceAndAct, stateOf, takeLink, vesselLine } from '../parts';
+import { batchLink, cellarFoot, evidenceAndAct, headlineOf, stateOf, takeLink, vesselLine } from '../parts';
 import type { AlertPayload, RenderContext, Rendered } from '../payload';
 import { render } from '../render';
-import { bare, vesselName } from '../words';
+import { said, vesselName } from '../words';
 
 /** Something has begun that a person should know. */
 export function alertOpened(payload: AlertPayload, context: RenderContext): Rendered {
-  const state = stateOf(payload.alert);
-  return render(`${state.word}: ${vesselName(payload.batch)}: ${bare(payload.alert.headline)}`, [
-    state,
-    { type: 'title', text: payload.alert.headline },
-    vesselLine(payload),
-    ...evidenceAndAct(payload),
-    batchLink(payload, context),
-    takeLink(payload, context),
-    cellarFoot(payload),
-  ]);
+  const { texts } = context;
+  const state = stateOf(texts, payload.alert);
+  return render(
+    texts.t('alert.subject', { state: state.word, vessel: vesselName(texts, payload.batch), headline: headlineOf(texts, payload) }),
+    [state, { type: 'title', text: said(texts, payload.alert.headline) }, vesselLine(payload, context), ...evidenceAndAct(payload, context), batchLink(payload, context), takeLink(payload, context), cellarFoot(payload, context)],
+    texts,
+  );
 }

@@ -1,18 +1,24 @@
-import { batchLink, cellarFoot } from '../parts';
+import { batchLink, cellarFoot, headlineOf } from '../parts';
 import type { AlertPayload, RenderContext, Rendered } from '../payload';
 import { render } from '../render';
-import { bare, lasting, vesselName, when } from '../words';
+import { lasting, vesselName, when } from '../words';
 
 /** What an alert told is no longer so: one line. A withdrawn "ready to bottle" says what that means. */
 export function alertResolved(payload: AlertPayload, context: RenderContext): Rendered {
   const { alert, batch, cellar, at } = payload;
+  const { texts } = context;
+  const { t } = texts;
   const withdrawn = alert.rule === 'bottle';
-  const line = `${vesselName(batch)}: “${bare(alert.headline)}” has passed. It was so from ${when(alert.since, cellar.time_zone)}, for ${lasting(alert.since, at)}.`;
-  return render(`${withdrawn ? 'No longer so' : 'Passed'}: ${vesselName(batch)}: ${bare(alert.headline)}`, [
-    withdrawn ? { type: 'state', word: 'Not yet', colour: 'ink2' } : { type: 'state', word: 'Cleared', colour: 'green' },
-    { type: 'prose', text: line },
-    ...(withdrawn ? [{ type: 'caution', text: 'Do not bottle it now. If some is in bottles, keep them cold and away from people, and read the batch’s page before you touch them.' } as const] : []),
-    batchLink(payload, context),
-    cellarFoot(payload),
-  ]);
+  const named = { vessel: vesselName(texts, batch), headline: headlineOf(texts, payload) };
+  return render(
+    t(withdrawn ? 'alert.subject.withdrawn' : 'alert.subject.passed', named),
+    [
+      withdrawn ? { type: 'state', word: t('state.not-yet'), colour: 'ink2' } : { type: 'state', word: t('state.cleared'), colour: 'green' },
+      { type: 'prose', text: t('alert.passed', { ...named, since: when(texts, alert.since, cellar.time_zone), span: lasting(texts, alert.since, at) }) },
+      ...(withdrawn ? [{ type: 'caution', text: t('alert.withdrawn') } as const] : []),
+      batchLink(payload, context),
+      cellarFoot(payload, context),
+    ],
+    texts,
+  );
 }

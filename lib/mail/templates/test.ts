@@ -3,10 +3,15 @@ import { render } from '../render';
 import { when } from '../words';
 
 /** Sent because somebody asked whether messages arrive. */
-export function testMail({ at, time_zone }: TestPayload, { publicUrl }: RenderContext): Rendered {
-  return render('A message to see whether messages arrive', [
-    { type: 'title', text: 'Mails of the watch arrive here.' },
-    { type: 'prose', text: `You asked for this one on ${when(at, time_zone)}. There is nothing to do.` },
-    { type: 'link', label: 'Open the messages', url: `${publicUrl}/settings/messages` },
-  ]);
+export function testMail({ at, time_zone }: TestPayload, { publicUrl, texts }: RenderContext): Rendered {
+  const { t } = texts;
+  return render(
+    t('test.subject'),
+    [
+      { type: 'title', text: t('test.title') },
+      { type: 'prose', text: t('test.asked', { when: when(texts, at, time_zone) }) },
+      { type: 'link', label: t('test.open-messages'), url: `${publicUrl}/settings/messages` },
+    ],
+    texts,
+  );
 }

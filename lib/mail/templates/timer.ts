@@ -1,20 +1,22 @@
+import type { Texts } from '../../texts/texts';
+import { stateBlock } from '../parts';
 import type { RenderContext, Rendered, TimerPayload } from '../payload';
 import { render, type Block } from '../render';
-import { vesselName, when } from '../words';
+import { listed, vesselName, when } from '../words';
 
 /** A clock has run down, the minute matters. */
-export function timerBlocks({ title, note, due, batch, cellar }: TimerPayload, { publicUrl }: RenderContext): Block[] {
+export function timerBlocks({ title, note, due, batch, cellar }: TimerPayload, { publicUrl, texts }: RenderContext): Block[] {
+  const { t } = texts;
   return [
-    { type: 'state', word: 'Now', colour: 'madder' },
+    stateBlock(texts, 'Now'),
     { type: 'title', text: title },
-    { type: 'line', text: `${vesselName(batch)}${batch.place === null ? '' : `, ${batch.place}`}, ${cellar.name}. Due ${when(due, cellar.time_zone)}.` },
+    { type: 'line', text: t('timer.due', { where: listed(texts, [vesselName(texts, batch), batch.place]), cellar: cellar.name, due: when(texts, due, cellar.time_zone) }) },
     ...(note === null ? [] : [{ type: 'caution', text: note } as const]),
-    { type: 'link', label: 'Open the rounds', url: `${publicUrl}/rounds` },
+    { type: 'link', label: t('digest.open-rounds'), url: `${publicUrl}/rounds` },
   ];
 }
 
-export const timerSubject = ({ title }: TimerPayload): string => `Now: ${title}`;
+export const timerSubject = ({ t }: Texts, { title }: TimerPayload): string => t('timer.subject', { title });
 
-export function timerMail(payload: TimerPayload, context: RenderContext): Rendered {
-  return render(timerSubject(payload), [...timerBlocks(payload, context), { type: 'foot', text: `${payload.cellar.name}. You put the first dose in, so you are told of the second.` }]);
-}
+export const timerMail = (payload: TimerPayload, context: RenderContext): Rendered =>
+  render(timerSubject(context.texts, payload), [...timerBlocks(payload, context), { type: 'foot', text: context.texts.t('timer.foot', { cellar: payload.cellar.name }) }], context.texts);

@@ -26,7 +26,7 @@ function endOfDay(now: number, timeZone: string): number {
 function laneOf(row: BatchRow) {
   const assessment = row.assessment as AssessmentBody | null;
   const name = { id: row.id, name: row.name, tag: row.tag };
-  if (!assessment) return { attention: null, lane: { ...name, state: 'Leave be', headline: row.pitchedAt === null ? 'Not pitched yet' : 'Not judged yet', gravity: row.originalGravity } };
+  if (!assessment) return { attention: null, lane: { ...name, state: 'Leave be' as const, headline: null, pitched: row.pitchedAt !== null, gravity: row.originalGravity } };
   const attention = attentionOf({
     calls: Object.fromEntries(CALL_NAMES.map((call) => [call, { ...assessment.calls[call], since: ms(assessment.calls[call].since), expectedAt: ms(assessment.calls[call].expected_at) }])) as unknown as Parameters<typeof attentionOf>[0]['calls'],
     alerts: row.alerts.flatMap((alert): OpenAlert[] => {

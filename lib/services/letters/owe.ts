@@ -22,7 +22,7 @@ export function tokenOfLetter(letter: LetterPayload): string {
 }
 
 /** Tells a person that something about the account has changed, at the address given (usually theirs). */
-export async function oweNotice(person: Pick<Person, 'id' | 'name' | 'email' | 'timeZone'>, what: NoticeLetter['what'], key: string, at: Date, transaction: Transaction, about: string | null = null, keepsAccount = true): Promise<void> {
-  const payload: NoticeLetter = { template: 'notice', what, at: at.toISOString(), time_zone: person.timeZone, about };
+export async function oweNotice(person: Pick<Person, 'id' | 'name' | 'email' | 'timeZone' | 'locale'>, what: NoticeLetter['what'], key: string, at: Date, transaction: Transaction, about: string | null = null, keepsAccount = true): Promise<void> {
+  const payload: NoticeLetter = { template: 'notice', what, at: at.toISOString(), time_zone: person.timeZone, about, locale: person.locale };
   await oweLetter({ cellarId: null, personId: keepsAccount ? person.id : null, to: { email: person.email, name: person.name }, dedupeKey: `notice:${what}:${key}`, payload }, transaction);
 }

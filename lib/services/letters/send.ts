@@ -4,6 +4,8 @@ import { logFor } from '@/lib/log';
 import { composeLetter } from '@/lib/mail/compose-letter';
 import { letterPayload, type LetterPayload } from '@/lib/mail/letters';
 import { asFailure } from '@/lib/mail/smtp';
+import { USUAL_UNITS } from '@/lib/core/units/chosen';
+import { textsFor } from '@/lib/texts/texts';
 import { messageId } from '../outbox/by-mail';
 import { nextTry } from '../outbox/retry';
 import type { SendDeps, SendResult } from '../outbox/send';
@@ -23,7 +25,7 @@ export async function sendLetters(deps: Pick<SendDeps, 'transport' | 'clock' | '
     if (!letter) continue;
     try {
       await deps.transport.send({
-        ...composeLetter(letter, { publicUrl: deps.publicUrl, token: tokenOfLetter(letter) }),
+        ...composeLetter(letter, { publicUrl: deps.publicUrl, token: tokenOfLetter(letter), timeZone: row.timeZone, texts: await textsFor({ locale: row.locale, units: USUAL_UNITS }) }),
         to: { name: row.name, address: row.email },
         messageId: messageId([row.dedupeKey], deps.messageHost),
         inReplyTo: null,

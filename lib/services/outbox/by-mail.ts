@@ -1,5 +1,6 @@
 import { createHash } from 'node:crypto';
 import { compose } from '@/lib/mail/compose';
+import { textsFor } from '@/lib/texts/texts';
 import type { MailTransport } from '@/lib/mail/transport';
 import { dedupeKey } from '@/lib/services/alerts/tell';
 import { takeUrlsFor } from '@/lib/services/alerts/take-links';
@@ -23,7 +24,7 @@ export function byMail({ transport, publicUrl, messageHost, now }: ByMail): Mean
       const takeUrls = await takeUrlsFor(ready, publicUrl, now());
       const mail = compose(
         ready.map(({ payload }) => payload),
-        { publicUrl, takeUrls },
+        { publicUrl, takeUrls, texts: await textsFor(first.row) },
       );
       await transport.send({
         ...mail,

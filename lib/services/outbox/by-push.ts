@@ -2,6 +2,7 @@ import { devicesOf, forgetDevice, noteDevice } from '@/db/queries/devices';
 import { asFailure } from '@/lib/mail/smtp';
 import { composePush } from '@/lib/push/compose';
 import type { PushTransport } from '@/lib/push/transport';
+import { textsFor } from '@/lib/texts/texts';
 import { NobodyThere, type Means } from './means';
 
 /** What is wrong now may be right tomorrow: a device that is off that long misses it, and sees it on the page. */
@@ -17,7 +18,10 @@ export function byPush({ transport, now }: ByPush): Means {
   return {
     name: 'push',
     async send(ready) {
-      const notice = composePush(ready.map(({ payload }) => payload));
+      const notice = composePush(
+        ready.map(({ payload }) => payload),
+        await textsFor(ready[0]!.row),
+      );
       const message = { body: JSON.stringify(notice), topic: topicOf(notice.tag), urgent: notice.urgent, ttlS: KEPT_S };
       let taken = 0;
       let failure: unknown;

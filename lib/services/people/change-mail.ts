@@ -55,7 +55,7 @@ export async function confirmMailChange(token: string, clock: Clock = systemCloc
     await person.update({ email: newEmail }, { transaction });
     await endLinks(person.id, ['sign-in', 'password'], now, transaction);
     await audit({ action: 'mail-address.changed', subject: person.id, personId: person.id, cellarId: null }, transaction);
-    await oweNotice({ id: person.id, name: person.name, timeZone: person.timeZone, email: before }, 'mail-changed', `${person.id}:${now}`, new Date(now), transaction, newEmail);
+    await oweNotice({ id: person.id, name: person.name, timeZone: person.timeZone, locale: person.locale, email: before }, 'mail-changed', `${person.id}:${now}`, new Date(now), transaction, newEmail);
     return { changed: true, waits_for: null };
   });
 }

@@ -1,7 +1,8 @@
 import { QueryTypes } from 'sequelize';
 import { database } from '@/db/client';
 import { actionsOf, type Actor } from '@/lib/auth/policies';
-import { LOCALES, type MeBody } from '@/lib/contracts/people';
+import type { MeBody } from '@/lib/contracts/people';
+import { localeOf } from '@/lib/texts/languages';
 import type { Role } from '@/lib/core/roles';
 import type { GravityUnit, TemperatureUnit, VolumeUnit } from '@/lib/core/units/chosen';
 import { NotFoundError } from '@/lib/errors';
@@ -32,7 +33,7 @@ export async function getMe(actor: Actor): Promise<MeBody> {
   const here = rows.find((row) => row.cellarId === actor.cellarId);
   if (!here) throw new NotFoundError('cellar');
   return {
-    person: { id: actor.personId, name: here.personName, email: here.email, time_zone: here.personZone, locale: LOCALES.find((locale) => locale === here.locale) ?? 'en', units: { gravity: here.gravity, temperature: here.temperature, volume: here.volume } },
+    person: { id: actor.personId, name: here.personName, email: here.email, time_zone: here.personZone, locale: localeOf(here.locale), units: { gravity: here.gravity, temperature: here.temperature, volume: here.volume } },
     cellar: { id: here.cellarId, name: here.cellarName, time_zone: here.cellarZone, currency: here.currency, role: here.role },
     cellars: rows.map((row) => ({ id: row.cellarId, name: row.cellarName, role: row.role })),
     may: actionsOf(here.role),

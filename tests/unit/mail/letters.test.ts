@@ -1,8 +1,9 @@
 import { describe, expect, it } from 'vitest';
 import { composeLetter } from '@/lib/mail/compose-letter';
 import type { InvitationLetter, LinkLetter } from '@/lib/mail/letters';
+import { english } from '../../support/texts';
 
-const context = { publicUrl: 'https://barn.example', token: 'A'.repeat(32) };
+const context = { publicUrl: 'https://barn.example', token: 'A'.repeat(32), texts: english };
 const invitation = (change: Partial<InvitationLetter> = {}): InvitationLetter => ({ template: 'invitation', invitation: 'x', cellar: 'Stone loft', by: 'Wren Holt', role: 'hand', expires_at: '2026-03-10T12:00:00Z', time_zone: 'Europe/Lisbon', ...change });
 const link = (kind: LinkLetter['kind']): LinkLetter => ({ template: 'link', kind, link: 'x', expires_at: '2026-03-10T12:00:00Z', new_email: 'new@loft.example' });
 
@@ -35,7 +36,7 @@ describe('letters', () => {
   });
 
   it('tell of a change to the account without a secret, with the way to undo it', () => {
-    const { subject, text } = composeLetter({ template: 'notice', what: 'password-changed', at: '2026-03-10T12:00:00Z', time_zone: 'UTC', about: null }, { publicUrl: 'https://barn.example', token: '' });
+    const { subject, text } = composeLetter({ template: 'notice', what: 'password-changed', at: '2026-03-10T12:00:00Z', time_zone: 'UTC', about: null }, { ...context, token: '' });
     expect(subject).toBe('Your passphrase was changed');
     expect(text).toContain('https://barn.example/settings/security');
     expect(text).not.toContain('#');

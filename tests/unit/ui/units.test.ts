@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { splitFigures } from '@/components/ui/figures';
+import { splitFigures } from '@/lib/core/units/figures';
 import { figureRead, gravityDoubt, gravityEnds, gravityText, gravityTyped, temperatureText, volumeEnds, volumeText } from '@/components/ui/units';
 import { USUAL_UNITS, type ChosenUnits } from '@/lib/core/units/chosen';
 

@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { splitFigures } from '@/components/ui/figures';
+import { splitFigures } from '@/lib/core/units/figures';
 
 const figures = (sentence: string) => splitFigures(sentence).filter((piece) => piece.figure).map((piece) => piece.text);
 

@@ -1,0 +1,202 @@
+/**
+ * English, by which every other language is held. The texts are in ICU
+ * MessageFormat: what stands in braces is put in when the message is written,
+ * `{n, plural, one {# job} other {# jobs}}` chooses by the language's own rules.
+ * A translation is free in its order and its forms; it uses the same names in
+ * braces, and no others. What people typed, and the sentences of the watch with
+ * their figures, come in as they are.
+ */
+export const en = {
+  // Dates, spans and units, of which the others are made.
+  'date.day': '{weekday} {day} {month}',
+  'date.time': '{hour}:{minute}',
+  'date.when': '{day} {time}',
+  'span.minutes': '{minutes} min',
+  'span.hours': '{hours} h',
+  'span.hours-minutes': '{hours} h {minutes} min',
+  'span.days': '{days, plural, one {# day} other {# days}}',
+  'unit.points': 'points',
+  'unit.points-a-day': 'points/d',
+  'unit.hours': 'h',
+  'unit.days': 'd',
+  'unit.volumes': 'volumes',
+  'list.two': '{first}, {then}',
+  'list.more': 'and {count} more',
+  sentence: '{text}.',
+
+  // The word that says how it stands with a vessel, as on the shelf.
+  'state.stop': 'Stop',
+  'state.now': 'Now',
+  'state.check': 'Check',
+  'state.silent': 'Silent',
+  'state.in-hand': 'In hand',
+  'state.due': 'Due',
+  'state.ready': 'Ready',
+  'state.cleared': 'Cleared',
+  'state.not-yet': 'Not yet',
+  'state.still': '{state}, still',
+
+  // In every mail.
+  'mail.caution': 'Take care.',
+  'mail.limit': 'limit {value}',
+  'vessel.tagged': '{name}, tag {tag}',
+
+  // An alert: something begins, goes on, is looked at again, has passed.
+  'alert.subject': '{state}: {vessel}: {headline}',
+  'alert.subject.look-again': 'Look again: {vessel}: {headline}',
+  'alert.subject.passed': 'Passed: {vessel}: {headline}',
+  'alert.subject.withdrawn': 'No longer so: {vessel}: {headline}',
+  'alert.since': '{where}. Since {since}, {span}.',
+  'alert.still': 'It has been so for {span}, and nobody has it in hand.',
+  'alert.look-again': 'You have this in hand and wanted to look again now. It has not passed.',
+  'alert.passed': '{vessel}: “{headline}” has passed. It was so from {since}, for {span}.',
+  'alert.withdrawn': 'Do not bottle it now. If some is in bottles, keep them cold and away from people, and read the batch’s page before you touch them.',
+  'alert.do-first': 'do first',
+  'alert.open-batch': 'Open the batch',
+  'alert.take': 'I have it',
+  'alert.take.own': 'opens a page with one button; then nobody is told again.',
+  'alert.take.signed-in': 'then nobody is told again.',
+  'alert.foot': '{cellar}. Times are those of {zone}. Where local law or licensed practice says otherwise, follow it.',
+
+  // What to do first where the watch does not say, and what can hurt while doing it; rounded to the safe side. Where no source is named: common practice.
+  'advice.overdue.first': 'Take a hydrometer reading, and look for foam or a ring at the glass. No fall and no foam: check the temperature first, then think of pitching again.',
+  'advice.foam.first': 'Fit a blow-off tube that ends under water in an open jar, and wipe the neck.',
+  'advice.foam.caution': 'A blocked airlock puts the glass under pressure. Ease it off slowly, with your face turned away, and never close a vessel while it works.',
+  'advice.neck.first': 'Fill an airlock, pull the tube, fit the airlock, and log the change.',
+  'advice.neck.caution': 'An airlock lets gas out; a plain bung does not. Never close a vessel while it works.',
+  'advice.stalled.first': 'Take a hydrometer reading before anything else: the sensor may be the one that has stopped. If it agrees, bring the vessel back into its range slowly and rouse it gently.',
+  'advice.stalled.caution': 'Do not bottle it: what sugar is left can ferment in the bottle. No hot liquid into cold glass; lift a full vessel with both hands.',
+  'advice.temperature.first': 'Move the vessel or change the room, a few degrees a day at most, and look again in some hours.',
+  'advice.temperature.caution': 'No hot water on cold glass; lift a full vessel with both hands.',
+  'advice.sensor.first': 'Look at the vessel yourself, take a hydrometer reading, and check the sensor’s battery and where it floats.',
+  'advice.rack.first': 'Take a hydrometer reading, then siphon off the lees into a clean vessel with little headspace.',
+  // UK HSE, EH40/2005 workplace exposure limits; common practice.
+  'advice.rack.caution': 'Carbon dioxide collects low: air the room while you work (8 h workplace limit 0.5 %). Lift a full vessel with both hands.',
+  'advice.bottle.first': 'Take two hydrometer readings two days apart. If they are equal, work out the sugar for the sparkle you want before you wash a bottle.',
+  // Common practice; UK Notice 162 section 1.2 for sale without approval.
+  'advice.bottle.caution':
+    'A bottle can burst: use bottles made for the pressure, weigh the priming sugar, wear gloves and eye protection. The law where you live comes first: drink made at home is generally not for sale without a licence, and has an age limit.',
+  'advice.refermentation.first': 'Do not bottle. If some of it is in bottles already, put them in the cold, away from people, and read this before you touch them.',
+  'advice.refermentation.caution': 'Bottles may be over pressure. Gloves, long sleeves and eye protection; do not shake or carry one that bulges; chill them for a day, then let the gas out little by little under a cloth.',
+
+  // Several messages in one mail.
+  'several.subject': '{count, plural, one {# message} other {# messages}}: {vessel}: {headline}',
+  'several.subject.now': 'Now: {count, plural, one {# message} other {# messages}}: {vessel}: {headline}',
+  'several.subject.readings': '{count, plural, one {# message} other {# messages}} about readings that do not come in',
+  'several.subject.more': '{subject}, and more',
+  'several.title': '{count, plural, one {# message} other {# messages at once}}',
+  'several.since': '{where}, {cellar}. Since {since}.',
+  'several.passed': '{vessel}: “{headline}” has passed, after {span}.',
+  'several.house': '{subject} ({when}).',
+  'several.test': 'You asked whether messages arrive: they do.',
+  'several.foot': 'They were owed together, so they come as one mail. Where local law or licensed practice says otherwise, follow it.',
+
+  // The morning digest.
+  'digest.subject': '{cellar}: {jobs, plural, =0 {nothing due today} one {# job today} other {# jobs today}}{vessels, plural, =0 {} one {, # vessel wants you} other {, # vessels want you}}',
+  'digest.title': '{cellar}, {day}',
+  'digest.rounds': 'the rounds',
+  'digest.job.late': 'late, {when}',
+  'digest.job.today': 'today',
+  'digest.job.taken': '{name} has it',
+  'digest.nothing': 'Nothing due today.',
+  'digest.nothing.next': 'Nothing due today. Next: {job}, {when}.',
+  'digest.vessel': '{vessel}. {headline}.',
+  'digest.not-pitched': 'Not pitched yet',
+  'digest.not-judged': 'Not judged yet',
+  'digest.leave-be': 'leave be',
+  'digest.no-vessel': 'No vessel is at work.',
+  'digest.muted': '{vessel} is muted until {until}.',
+  'digest.muted.by': '{vessel} is muted until {until} by {name}.',
+  'digest.open-rounds': 'Open the rounds',
+  'digest.shelf': 'The shelf',
+  'digest.shelf.after': 'as it stands now; this was written at {time}.',
+  'digest.foot': 'The morning digest. Times are those of {zone}. Another hour, or none: in the settings, under messages.',
+
+  // A clock that somebody started has run down.
+  'timer.subject': 'Now: {title}',
+  'timer.due': '{where}, {cellar}. Due {due}.',
+  'timer.foot': '{cellar}. You put the first dose in, so you are told of the second.',
+
+  // The house itself takes no readings, or takes them again.
+  'ingest.subject': 'Check: no readings come in from any sensor',
+  'ingest.subject.still': 'Check, still: no readings come in from any sensor',
+  'ingest.subject.passed': 'Passed: readings come in again',
+  'ingest.title': 'No readings come in from any sensor.',
+  'ingest.since': 'Since {since}, {span}.',
+  'ingest.means': 'The part of Fallbright that takes readings has stopped. Sensors keep what they measure and send it later. Until then no vessel is watched: stalls, foam and temperature go unseen, and no sensor is called silent for it.',
+  'ingest.first': 'Look at the vessels yourself. On the machine that runs Fallbright, see whether the broker runs and read its log; start it again.',
+  'ingest.passed': 'Fallbright takes readings again. It took none from {since}, for {span}. Sensors send what they kept; the curves catch up by themselves.',
+  'ingest.open-sensors': 'Open the sensors',
+  'ingest.foot': 'You get this once for the house, not once for each sensor.',
+
+  // Sent because somebody asked whether messages arrive.
+  'test.subject': 'A message to see whether messages arrive',
+  'test.title': 'Mails of the watch arrive here.',
+  'test.asked': 'You asked for this one on {when}. There is nothing to do.',
+  'test.open-messages': 'Open the messages',
+
+  // On a phone's locked screen.
+  'push.title': '{state}: {vessel}',
+  'push.title.look-again': 'Look again: {vessel}',
+  'push.title.passed': 'Passed: {vessel}',
+  'push.line': '{vessel}: {headline}',
+  'push.line.passed': '{vessel}: passed, {headline}',
+  'push.several': '{count, plural, one {# message} other {# messages}} from {cellar}',
+  'push.several.now': 'Now, from {cellar}',
+  'push.test': 'Messages of the watch arrive on this device.',
+
+  // An invitation to share a cellar.
+  'invitation.subject': '{by} asks you to share the cellar {cellar}',
+  'invitation.title': 'Share the cellar {cellar}',
+  'invitation.keeper': '{by} asks you to share it as keeper. A keeper runs the cellar: batches, people, sensors, settings.',
+  'invitation.brewer': '{by} asks you to share it as brewer. A brewer makes batches: must sheets, the log, bottling, labels, share links.',
+  'invitation.hand': '{by} asks you to share it as hand. A hand helps on the round: reads, looks, ticks jobs, takes alerts in hand.',
+  'invitation.guest': '{by} asks you to share it as guest. A guest looks at batches and bottles, and writes tasting notes.',
+  'invitation.look': 'Look at the invitation',
+  'invitation.until': 'Open until {until}. It works once.',
+  'invitation.foot': 'Nothing happens unless you accept. If you do not know who this is, leave it be: no account is made and your address is not kept longer than the invitation.',
+
+  // Links that do something, once.
+  'link.sign-in.subject': 'Your link to sign in',
+  'link.sign-in.title': 'Sign in to Fallbright',
+  'link.sign-in.means': 'The link opens a page with one button. It works once, for 10 min.',
+  'link.sign-in.go': 'Sign in',
+  'link.password.subject': 'Choose a new passphrase',
+  'link.password.title': 'Choose a new passphrase',
+  'link.password.means': 'The link opens a page where you choose it. It works once, for 10 min. Choosing it ends every sign-in that is open.',
+  'link.password.go': 'Choose a passphrase',
+  'link.mail-old.subject': 'Confirm that your mail address changes',
+  'link.mail-old.title': 'Change your mail address',
+  'link.mail-old.means': 'Somebody signed in as you asks to change it to {address}. It changes once this link and the one sent to the new address have both been used, within a day.',
+  'link.mail-old.another': 'another',
+  'link.mail-old.go': 'Confirm the change',
+  'link.mail-old.caution': 'If it was not you, do not use the link. Choose a new passphrase instead: it ends every open sign-in and this change.',
+  'link.mail-new.subject': 'Confirm your new mail address',
+  'link.mail-new.title': 'Is this your address?',
+  'link.mail-new.means': 'An account of Fallbright asks to use this address from now on. It changes once this link and the one sent to the old address have both been used, within a day.',
+  'link.mail-new.go': 'Confirm the address',
+  'link.not-you': 'If you did not ask for this, leave it be: nothing changes, and the link stops by itself. Nobody from Fallbright ever asks for it.',
+
+  // Something about the account has changed.
+  'notice.password-changed': 'Your passphrase was changed',
+  'notice.password-changed.means': 'Every other sign-in of yours has ended.',
+  'notice.second-factor-on': 'A second factor was set up',
+  'notice.second-factor-on.means': 'Signing in asks for a code of your authenticator from now on.',
+  'notice.second-factor-off': 'The second factor was taken off',
+  'notice.second-factor-off.means': 'Signing in asks for no code any more.',
+  'notice.recovery-code-used': 'A recovery code was used',
+  'notice.recovery-code-used.means': 'Somebody signed in to your account with one of the recovery codes. That code is used up.',
+  'notice.mail-changed': 'Your mail address was changed',
+  'notice.mail-changed.means': 'The account uses {address} from now on.',
+  'notice.account-deleted': 'Your account was deleted',
+  'notice.account-deleted.means': 'What you logged stays in the cellars’ logs without your name.',
+  'notice.removed': 'You no longer share the cellar {cellar}',
+  'notice.removed.means': 'A keeper has taken you out. Your tokens and calendar address for it have stopped.',
+  'notice.handed-over': 'You keep the cellar {cellar} now',
+  'notice.handed-over.means': 'Its keeper has handed it over to you: people, sensors and settings are yours to run.',
+  'notice.webhook-given-up': 'The webhook to {host} was switched off',
+  'notice.webhook-given-up.means': 'Nothing arrived there for five days. What is owed from now on is not sent. Switch it on again once something listens.',
+  'notice.open-webhooks': 'Open the webhooks',
+  'notice.look': 'Look at your sign-ins',
+  'notice.caution': 'If it was not you: choose a new passphrase at once (“Forgot it?” on the sign-in page). That ends every open sign-in.',
+} as const;
