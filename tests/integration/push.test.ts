@@ -58,7 +58,7 @@ describe('push messages', () => {
     const browser = service.browser();
     await register(browser);
     await tell(['stall']);
-    expect(said(browser)).toEqual([{ title: 'Check: Oat stout', body: expect.stringContaining('Stopped at 1.041.') as string, url: expect.stringMatching(/^\/alerts\?alert=/) as string, tag: expect.stringMatching(/^alert-/) as string, alert: expect.any(String) as string, urgent: false }]);
+    expect(said(browser)).toEqual([{ title: 'Check: Oat stout', body: expect.stringContaining('Stopped at 1.041.') as string, url: expect.stringMatching(/^\/alerts\?alert=/) as string, tag: expect.stringMatching(/^alert-/) as string, alert: expect.any(String) as string, take: 'I have it', lang: 'en', urgent: false }]);
     const { headers, body } = service.taken[0]!;
     expect(body.toString('latin1')).not.toContain('stout');
     expect(headers).toMatchObject({ 'content-encoding': 'aes128gcm', urgency: 'normal' });
