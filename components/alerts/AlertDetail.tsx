@@ -15,7 +15,7 @@ import { State } from '@/components/ui/StateMark';
 import { acknowledgeAlert, resolveAlert } from '@/lib/client/alerts';
 import { ClientError } from '@/lib/client/fetcher';
 import type { AlertBody } from '@/lib/contracts/alerts';
-import { alertFate, alertState, lookAgainTimes, standsSince, toldLines } from './rows';
+import { alertFate, alertState, goneSentence, lookAgainTimes, standsSince, toldLines } from './rows';
 
 interface AlertDetailProps {
   alert: AlertBody;
@@ -101,6 +101,7 @@ export function AlertDetail({ alert, now, timeZone, mayTake, mayClear, taking, o
   const call = alert.evidence;
   const ruler = rulerOf(alert.call, call, null);
   const told = toldLines(alert, now, timeZone);
+  const gone = alert.state === 'resolved' ? null : goneSentence(alert, now, timeZone);
   return (
     <article aria-label={`${word}, ${alert.batch.name}`} className="flex flex-col gap-5 px-(--margin) py-4 strip:bg-lit">
       <button type="button" onClick={onBack} className="type-label -mb-3 -ml-2 inline-flex min-h-11 items-center gap-1 self-start px-2 text-ink2 strip:hidden">
@@ -115,6 +116,11 @@ export function AlertDetail({ alert, now, timeZone, mayTake, mayClear, taking, o
           <Sentence>{call.reason}</Sentence>
         </p>
         <p className="type-label mt-1 text-ink2">{standsSince(alert, now, timeZone)}</p>
+        {gone && (
+          <p className="type-body mt-3 border-l-[3px] border-ink pl-3">
+            <Sentence>{gone}</Sentence>
+          </p>
+        )}
       </header>
       {ruler && (
         <Part name="the number">

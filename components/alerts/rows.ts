@@ -35,10 +35,34 @@ export function alertVessel({ batch, call, kind }: AlertBody): VesselState {
   };
 }
 
+/** That what an alert is about has gone, while it is kept in case it comes back. */
+const GONE_WORDS: Partial<Record<AlertBody['call'], string>> = { temperature: 'back in its range', stalled: 'not stalled any more' };
+
+export type Going = Pick<AlertBody, 'call' | 'kind' | 'gone'>;
+
+export const goneWord = ({ call, kind }: Pick<Going, 'call' | 'kind'>): string => (call === 'sensor' && kind === 'silent' ? 'heard again' : (GONE_WORDS[call] ?? 'no longer so'));
+
+/** `back in its range since 14:20`; null: it is so. */
+export const goneWords = (alert: Going, now: number, timeZone: string): string | null => alert.gone && `${goneWord(alert)} since ${when(seconds(alert.gone.since), now, timeZone)}`;
+
+/** `kept until 16:20`; null: it is so. No time ends it without a reading. */
+export function keptWords({ gone }: Pick<Going, 'gone'>, now: number, timeZone: string): string | null {
+  if (gone === null) return null;
+  const until = seconds(gone.kept_until);
+  return `kept until ${until <= now ? 'the next reading' : when(until, now, timeZone)}`;
+}
+
+/** `Back in its range since 14:20: the alert is kept until 16:20, in case it comes back.` */
+export function goneSentence(alert: Going, now: number, timeZone: string): string | null {
+  const words = goneWords(alert, now, timeZone);
+  return words && `${words.charAt(0).toUpperCase()}${words.slice(1)}: the alert is ${keptWords(alert, now, timeZone)}, in case it comes back.`;
+}
+
 /** `Oat stout, tag 5, since Tue 07:30` */
 export function alertMeta(alert: AlertBody, now: number, timeZone: string): string {
   const note = alert.note === null ? null : `“${alert.note}”`;
-  const parts = [alert.batch.name, alert.batch.tag === null ? null : `tag ${alert.batch.tag}`, note ?? `since ${when(seconds(alert.since), now, timeZone)}`];
+  const gone = alert.state === 'resolved' ? null : goneWords(alert, now, timeZone);
+  const parts = [alert.batch.name, alert.batch.tag === null ? null : `tag ${alert.batch.tag}`, gone ? `${gone}, ${keptWords(alert, now, timeZone)}` : (note ?? `since ${when(seconds(alert.since), now, timeZone)}`)];
   return parts.filter((part) => part !== null).join(', ');
 }
 

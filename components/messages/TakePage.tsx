@@ -7,7 +7,7 @@ import { Wordmark } from '@/components/ui/Mark';
 import { ErrorState, FormError } from '@/components/ui/Notice';
 import { Sentence } from '@/components/ui/Sentence';
 import { State } from '@/components/ui/StateMark';
-import { alertState } from '@/components/alerts/rows';
+import { alertState, goneWord } from '@/components/alerts/rows';
 import { takeByLink, useTakeLink } from '@/lib/client/messages';
 import type { TakePage as Body } from '@/lib/contracts/messages';
 import { useSaving } from './use-saving';
@@ -64,6 +64,7 @@ function Alert({ page, token, retry }: { page: Body; token: string; retry: () =>
         <p className="type-body mt-1">
           <Sentence>{shown.reason}</Sentence>
         </p>
+        {shown.gone && shown.state !== 'resolved' && <p className="type-body mt-3 border-l-[3px] border-ink pl-3">Meanwhile it is {goneWord(shown)}. It is over by itself if that lasts.</p>}
       </header>
       {shown.act && (
         <section>

@@ -1,6 +1,7 @@
 import { dayOf } from '@/components/batch/words';
 import { clock, dayName, MONTHS, wallTime, when } from '@/components/charts/zone';
 import { gravityText, volumeText } from '@/components/ui/units';
+import { goneSentence, keptWords, type Going } from '@/components/alerts/rows';
 import type { AlertBody } from '@/lib/contracts/alerts';
 import type { CallBody } from '@/lib/contracts/assessment';
 import type { LaneBody } from '@/lib/contracts/batches';
@@ -8,7 +9,7 @@ import { attentionOf, compareAttention, type Attention, type OpenAlert, type She
 import { CALL_NAMES, type CallName } from '@/lib/core/types';
 
 /** What a lane needs to know of an alert; the shelf's own answer has less than the list of alerts. */
-export type LaneAlert = Pick<AlertBody, 'id' | 'call' | 'level' | 'state' | 'since'> & { takenBy: string | null; lookAgainAt: string | null };
+export type LaneAlert = Pick<AlertBody, 'id' | 'call' | 'level' | 'state' | 'since'> & Going & { takenBy: string | null; lookAgainAt: string | null };
 
 /** One lane, judged and worded; times are seconds since 1970. */
 export interface LaneView {
@@ -35,6 +36,8 @@ export function alertsOf(lane: LaneBody, listed: readonly AlertBody[] | undefine
       {
         id: alert.id,
         call,
+        kind: full?.kind ?? null,
+        gone: full?.gone ?? null,
         level: full?.level ?? (call === 'rack' || call === 'bottle' ? ('know' as const) : ('check' as const)),
         state: full?.state ?? (alert.taken_by === null ? ('open' as const) : ('acknowledged' as const)),
         since: full?.since ?? alert.opened_at,
@@ -125,8 +128,8 @@ export function laneView(lane: LaneBody, listed: readonly AlertBody[] | undefine
     lane,
     attention,
     headline: attention.group === 'leave' ? words.headline : withoutStop(words.headline),
-    reason: words.reason,
-    when: whenWords(attention, speaking, now, timeZone),
+    reason: (speaking && goneSentence(speaking, now, timeZone)) ?? words.reason,
+    when: (attention.state !== 'In hand' && speaking && keptWords(speaking, now, timeZone)) || whenWords(attention, speaking, now, timeZone),
     openAlert: speaking?.state === 'open' ? speaking : null,
   };
 }

@@ -12,6 +12,8 @@ export interface AlertRow extends Pick<Alert, 'id' | 'call' | 'kind' | 'level' |
   told: Array<{ person: string; means: MeansName; at: string | null; state: 'waiting' | 'held' | 'sent' | 'failed' | 'dropped'; heldBy: HeldBy | 'turn' | null; due: string; error: string | null }>;
   /** The vessel is muted until then. */
   mutedUntil: Date | null;
+  /** What it is about is no longer so since `at` (ms); `keepMin` is set for its rule, null: the usual. */
+  gone: { rule: string; at: number; keepMin: number | null } | null;
 }
 
 interface Filter {
@@ -36,7 +38,10 @@ export function findAlerts({ cellarId, id, state, batchId, after, limit }: Filte
              'state', case when o.sent_at is not null then 'sent' when o.dropped_at is not null then 'dropped' when o.failed_at is not null then 'failed' when o.held_by is not null then 'held' else 'waiting' end,
              'heldBy', o.held_by, 'due', o.next_attempt_at, 'error', o.last_error) order by o.id)
          from outbox o join people p on p.id = o.person_id where o.alert_id = a.id), '[]') as told,
-       (select max(m.until_at) from mutes m where m.batch_id = a.batch_id and m.ended_at is null and m.until_at > now()) as "mutedUntil"
+       (select max(m.until_at) from mutes m where m.batch_id = a.batch_id and m.ended_at is null and m.until_at > now()) as "mutedUntil",
+       (select json_build_object('rule', s.rule, 'at', s.state->'goneSince', 'keepMin', (
+           select r.keep_min from rule_settings r where r.cellar_id = a.cellar_id and r.rule = s.rule and (r.batch_id = a.batch_id or r.batch_id is null) order by r.batch_id nulls last limit 1))
+         from alert_states s where s.batch_id = a.batch_id and s.alert_id = a.id and s.state->>'phase' = 'keeping') as gone
      from alerts a
      join batches b on b.id = a.batch_id
      left join people taker on taker.id = a.acknowledged_by

@@ -27,7 +27,9 @@ export const alertSchema = z.object({
   resolved_at: z.string().nullable(),
   /** Null: the program saw that it had passed. */
   resolved_by: z.object({ id, name: z.string() }).nullable(),
-  /** The call as it was when the alert opened. */
+  /** What it is about is no longer so since then; it is over at `kept_until` if that lasts. Null: it is so. */
+  gone: z.object({ since: z.string(), kept_until: z.string() }).nullable(),
+  /** The call as it was last while it was so. */
   evidence: callSchema,
   /** Who was told, when, by which means, and whether it went. */
   told: z.array(

@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { LONGEST_SPAN_MIN, RULE_NAMES } from '../core/alerts/rules';
 import { MEANS } from '../core/alerts/telling';
 import { CALL_NAMES } from '../core/types';
-import { ALERT_LEVELS, ALERT_STATES } from './alerts';
+import { ALERT_LEVELS, ALERT_STATES, alertSchema } from './alerts';
 import { id, timestamp } from './common';
 
 const minuteOfDay = z.number('must be a time').int('must be a time').min(0, 'must be a time of the day').max(1439, 'must be a time of the day');
@@ -107,6 +107,7 @@ export const takePage = z.object({
   since: z.string(),
   state: z.enum(ALERT_STATES),
   taken_by: z.string().nullable(),
+  gone: alertSchema.shape.gone,
   /** The link has done what it can do. */
   used: z.boolean(),
 });

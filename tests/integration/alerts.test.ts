@@ -8,6 +8,7 @@ import { acknowledgeAlert } from '@/lib/services/alerts/acknowledge';
 import { evaluateAlerts } from '@/lib/services/alerts/evaluate';
 import { listAlerts } from '@/lib/services/alerts/list';
 import { resolveAlert } from '@/lib/services/alerts/resolve';
+import { updateRule } from '@/lib/services/messages/update';
 import { changeRole, removeMember } from '@/lib/services/cellars/members';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildCellar, buildMember } from '../support/factories';
@@ -86,6 +87,25 @@ describe('an alert', () => {
     await h.look({});
     expect(await list(h.keeper)).toMatchObject({ counts: { open: 0, resolved: 1 }, items: [{ state: 'resolved', resolved_by: null, resolved_at: new Date(h.clock.now()).toISOString() }] });
     expect((await h.mails()).map((mail) => (mail.payload as { event: string }).event)).toEqual(['opened', 'opened', 'resolved', 'resolved']);
+  });
+
+  it('says since when it is so no longer and until when it is kept, by its rule as the cellar set it', async () => {
+    const cold = (headline: string) => h.look({ temperature: callWith('yes', { kind: 'low', since: START - 5 * HOUR, headline }) });
+    await cold('Too cold: 15.5 °C.');
+    h.clock.advance(HOUR);
+    expect(await cold('Too cold: 14.9 °C.')).toBe(true);
+    // The words are those of now, and nobody is told twice.
+    expect((await list(h.keeper)).items).toMatchObject([{ gone: null, evidence: { headline: 'Too cold: 14.9 °C.' } }]);
+    expect(await h.mails()).toHaveLength(2);
+    h.clock.advance(HOUR);
+    expect(await h.look({})).toBe(true);
+    const back = h.clock.now();
+    expect((await list(h.keeper)).items).toMatchObject([{ state: 'open', evidence: { headline: 'Too cold: 14.9 °C.' }, gone: { since: new Date(back).toISOString(), kept_until: new Date(back + 2 * HOUR).toISOString() } }]);
+    await updateRule(h.keeper, null, { rule: 'temperature', batch_id: null, usual: false, enabled: true, for_min: null, keep_min: 300 }, { clock: h.clock });
+    expect((await list(h.keeper)).items[0]!.gone).toEqual({ since: new Date(back).toISOString(), kept_until: new Date(back + 5 * HOUR).toISOString() });
+    h.clock.advance(HOUR);
+    await cold('Too cold: 15.1 °C.');
+    expect((await list(h.keeper)).items).toMatchObject([{ gone: null, evidence: { headline: 'Too cold: 15.1 °C.' } }]);
   });
 
   it('shows the newer kind when a slow batch gets stuck, without a second mail', async () => {

@@ -59,10 +59,12 @@ export async function evaluateAlerts(judged: Judged, transaction: Transaction): 
       alert = await carryOut({ judged, rule, call, event, alert, hushed }, transaction);
       heard ||= !hushed;
     }
-    if (alert && call && look.type === 'true' && isUp(state) && alert.kind !== call.kind) {
+    if (alert && call && look.type === 'true' && isUp(state) && !isDeepStrictEqual(alert.evidence, call)) {
+      heard ||= alert.kind !== call.kind;
+      seen ||= !isDeepStrictEqual(read(alert.evidence), read(call));
       await alert.update({ kind: call.kind, evidence: call }, { transaction });
-      seen = heard = true;
     }
+    seen ||= isUp(state) && isUp(before.state) && state.phase !== before.state.phase;
     const alertId = state.phase === 'inactive' || state.phase === 'pending' ? null : (alert?.id ?? null);
     const changed = alertId !== (row?.alertId ?? null) || !isDeepStrictEqual(state, before.state);
     if (changed) await saveAlertState(batch.id, { rule: rule.name, state, alertId }, transaction);
@@ -71,6 +73,9 @@ export async function evaluateAlerts(judged: Judged, transaction: Transaction): 
   if (seen) await notifyChange({ cellar: batch.cellarId, kind: 'alert', batch: batch.id }, transaction, { toWebhooks: heard });
   return seen;
 }
+
+/** What a person reads of a call; its figures alone move with every look. */
+const read = ({ kind, headline, reason }: Call) => ({ kind, headline, reason });
 
 interface Happened {
   judged: Judged;

@@ -9,6 +9,7 @@ import type { TakePage } from '@/lib/contracts/messages';
 import { ROLES } from '@/lib/core/roles';
 import { ConflictError, NotFoundError } from '@/lib/errors';
 import type { Ready } from '../outbox/means';
+import { presentGone } from './present';
 import { takeAlert } from './take';
 
 /** An alert that nobody took in three days is told again by other roads. */
@@ -54,6 +55,7 @@ export async function openTakeLink(token: string, { clock = systemClock }: { clo
     since: alert.since instanceof Date ? alert.since.toISOString() : new Date(alert.since).toISOString(),
     state: alert.state,
     taken_by: alert.acknowledgedBy?.name ?? null,
+    gone: alert.gone && presentGone(alert.gone),
     used: link!.usedAt !== null,
   };
 }

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { alertFate, alertMeta, alertState, byNeed, lookAgainTimes, toldLines } from '@/components/alerts/rows';
+import { alertFate, alertMeta, alertState, byNeed, goneSentence, lookAgainTimes, toldLines } from '@/components/alerts/rows';
 import type { AlertBody } from '@/lib/contracts/alerts';
 import { call, hours, NOW } from './fixtures';
 
@@ -19,6 +19,7 @@ const alert = (over: Partial<AlertBody> = {}): AlertBody => ({
   look_again_at: null,
   resolved_at: null,
   resolved_by: null,
+  gone: null,
   evidence: call(),
   told: [],
   muted_until: null,
@@ -39,6 +40,16 @@ describe('an alert in the list', () => {
   it('says what somebody said they do in place of since when', () => {
     expect(alertMeta(alert(), NOW, 'UTC')).toBe('Oat stout, tag 5, since Wed 07:32');
     expect(alertMeta(alert({ note: 'Moved off the sill.' }), NOW, 'UTC')).toBe('Oat stout, tag 5, “Moved off the sill.”');
+  });
+
+  it('says that it is so no longer, and until when it is kept', () => {
+    const gone = { since: hours(-1), kept_until: hours(1) };
+    expect(alertMeta(alert({ call: 'temperature', gone, note: 'Moved.' }), NOW, 'UTC')).toBe('Oat stout, tag 5, back in its range since 13:32, kept until 15:32');
+    expect(goneSentence(alert({ call: 'sensor', kind: 'silent', gone }), NOW, 'UTC')).toBe('Heard again since 13:32: the alert is kept until 15:32, in case it comes back.');
+    expect(goneSentence(alert({ call: 'sensor', kind: 'frozen', gone }), NOW, 'UTC')).toMatch(/^No longer so since 13:32/);
+    expect(goneSentence(alert({ gone: { ...gone, kept_until: hours(-0.5) } }), NOW, 'UTC')).toBe('Not stalled any more since 13:32: the alert is kept until the next reading, in case it comes back.');
+    expect(goneSentence(alert(), NOW, 'UTC')).toBeNull();
+    expect(alertMeta(alert({ state: 'resolved', gone: null, note: 'Moved.' }), NOW, 'UTC')).toBe('Oat stout, tag 5, “Moved.”');
   });
 
   it('says who was told, who has it, and that the time to look again has passed', () => {

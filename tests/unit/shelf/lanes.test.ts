@@ -29,6 +29,16 @@ describe('a lane', () => {
     expect(view.openAlert).toBeNull();
   });
 
+  it('says that what an alert is about has gone, and until when it is kept', () => {
+    const lane = aLane({ calls: { temperature: { verdict: 'no', headline: 'In its range: 18.4 °C.' } }, alerts: [{ call: 'temperature' }] });
+    const gone = { since: at('2026-10-15T13:50Z'), kept_until: at('2026-10-15T15:50Z') };
+    const view = laneView(lane, [anAlert(lane, { call: 'temperature', gone })], NOW, 'UTC');
+    expect(view).toMatchObject({ attention: { state: 'Check' }, headline: 'In its range: 18.4 °C', when: 'kept until 15:50' });
+    expect(view.reason).toBe('Back in its range since 13:50: the alert is kept until 15:50, in case it comes back.');
+    const taken = laneView(lane, [anAlert(lane, { call: 'temperature', gone, state: 'acknowledged', acknowledged_by: { id: lane.id, name: 'Bram Holt' } })], NOW, 'UTC');
+    expect(taken.when).toBe('Bram has it');
+  });
+
   it('speaks before the first judgement', () => {
     expect(viewOf({ assessment: null, pitched_at: null }).headline).toBe('Not pitched yet.');
     expect(viewOf({ assessment: null, sensor: null }).reason).toContain('Read by hand');

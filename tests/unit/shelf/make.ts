@@ -86,6 +86,7 @@ export function anAlert(lane: LaneBody, given: Partial<AlertBody> = {}): AlertBo
     look_again_at: null,
     resolved_at: null,
     resolved_by: null,
+    gone: null,
     evidence: quiet,
     told: [],
     muted_until: null,
