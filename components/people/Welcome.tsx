@@ -2,6 +2,7 @@
 
 import { useRouter } from 'next/navigation';
 import { useState, type FormEvent } from 'react';
+import { forgetLeft, useLeft } from '@/components/shell/left-cellar';
 import { TimeZoneField, useDeviceZone } from '@/components/settings/TimeZoneField';
 import { Button } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
@@ -11,10 +12,11 @@ import { createCellar } from '@/lib/client/people';
 import { signOut } from '@/lib/client/sign-in';
 
 /** For somebody who belongs to no cellar (any more): make one, or wait to be invited. */
-export function Welcome({ name }: { name: string }) {
+export function Welcome({ id, name }: { id: string; name: string }) {
   const router = useRouter();
   const { busy, failed, fields, act } = useAct();
   const device = useDeviceZone();
+  const left = useLeft(id);
   const [cellar, setCellar] = useState('');
   const [chosen, setZone] = useState<string | null>(null);
   const zone = chosen ?? device;
@@ -22,13 +24,19 @@ export function Welcome({ name }: { name: string }) {
     event.preventDefault();
     void act(() => createCellar({ name: cellar, time_zone: zone })).then((done) => {
       if (!done) return;
+      forgetLeft();
       router.replace('/shelf');
       router.refresh();
     });
   }
   return (
     <form noValidate onSubmit={submit} className="flex flex-col gap-4">
-      <h1 className="type-head">No cellar yet, {name}</h1>
+      <h1 className="type-head break-words">{left === null ? `No cellar yet, ${name}` : `No cellar now, ${name}`}</h1>
+      {left !== null && (
+        <p role="status" className="type-body break-words border-l-[3px] border-ink pl-3">
+          You are no longer in <b className="font-semibold">{left}</b>. What you logged there stays with it.
+        </p>
+      )}
       <p className="type-body text-ink2">Make one and start a batch in it. To share somebody else’s, open the link from their invitation.</p>
       <Field label="name of the cellar" tall maxLength={80} autoFocus value={cellar} error={fields.name} onChange={(event) => setCellar(event.target.value)} />
       <TimeZoneField value={zone} onChoose={setZone} error={fields.time_zone} />
@@ -36,7 +44,10 @@ export function Welcome({ name }: { name: string }) {
       <Button type="submit" look="first" size="tall" disabled={busy || cellar.trim() === ''}>
         Make it
       </Button>
-      <Button look="quiet" onClick={() => void signOut()}>
+      <Button look="quiet" onClick={() => {
+          forgetLeft();
+          void signOut();
+        }}>
         Sign out
       </Button>
     </form>

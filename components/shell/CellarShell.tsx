@@ -9,6 +9,7 @@ import { useAlerts } from '@/lib/client/alerts';
 import { useLiveChanges } from '@/lib/client/use-live-changes';
 import { USUAL_UNITS, type ChosenUnits } from '@/lib/core/units/chosen';
 import { Header } from './Header';
+import { LeftBar } from './LeftBar';
 import { OfflineBar } from './OfflineBar';
 import { PhoneTabs } from './PhoneTabs';
 import { placesFor } from './places';
@@ -39,6 +40,7 @@ export function CellarShell({ units, children }: { units: ChosenUnits; children:
       </a>
       <Header glance={glance} places={places} />
       <OfflineBar live={live} timeZone={glance.timeZone} />
+      <LeftBar />
       <main key={drawnFor} id="page" tabIndex={-1} className="pb-20 outline-none strip:pb-0 print:pb-0">
         {drawn ? children : <Haze height={240} className="mx-(--margin) mt-5" />}
       </main>

@@ -3,10 +3,11 @@ import type { Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { Membership, Person } from '@/db/models';
 import { hashPassword } from '@/lib/auth/passwords';
+import { removeMember } from '@/lib/services/cellars/members';
 import { beginSecondFactor, confirmSecondFactor } from '@/lib/services/people/second-factor';
 import { expectAccessible, expectNoSidewaysScroll, useBrowser } from '../support/browser';
 import { useDatabase } from '../support/database';
-import { buildCellar } from '../support/factories';
+import { buildBatch, buildCellar, buildMember } from '../support/factories';
 import { startHouse, type House } from '../support/house';
 import { until } from '../support/processes';
 
@@ -83,7 +84,8 @@ describe('sharing a cellar', () => {
     await row.getByRole('button', { name: 'Take out' }).click();
     await row.getByRole('button', { name: 'Take out' }).click();
     await phone.waitForURL(/\/welcome/);
-    await phone.getByRole('heading', { name: /No cellar yet/ }).waitFor();
+    await phone.getByRole('heading', { name: 'No cellar now, Ivy Pell' }).waitFor();
+    await phone.getByText('You are no longer in Stone loft.').waitFor();
     await expectAccessible(phone);
     await mailTo('ivy@elsewhere.example', /no longer share/);
 
@@ -116,6 +118,34 @@ describe('sharing a cellar', () => {
     await page.getByRole('button', { name: 'Stone loft' }).click();
     await page.getByRole('button', { name: /Stone loft.*Show another cellar/ }).waitFor();
     for (const visit of [context, theirs]) await visit.close();
+  });
+});
+
+describe('taken out of one of two cellars', () => {
+  it('is told so in words at the page of a batch, lands on the other’s shelf, and is told once', async () => {
+    const [out, stays] = [await buildCellar({ name: 'Chalk cave' }), await buildCellar({ name: 'Hay store' })];
+    const person = await Person.create({ name: 'Una Marsh', email: 'una@cave.example' });
+    await Membership.bulkCreate([out, stays].map((cellar) => ({ cellarId: cellar.id, personId: person.id, role: 'hand' as const })));
+    const batch = await buildBatch({ cellarId: out.id, name: 'Sloe wine' });
+    const { page, context } = await browser.visitAs(person.id, house.web.url, { phone: true });
+    await page.goto(`${house.web.url}/shelf`);
+    await page.getByRole('button', { name: /Show another cellar/ }).click();
+    await page.getByRole('button', { name: 'Chalk cave' }).click();
+    await page.getByRole('button', { name: /Chalk cave.*Show another cellar/ }).waitFor();
+    await page.goto(`${house.web.url}/batches/${batch.id}`);
+    await page.getByRole('heading', { level: 1, name: 'Sloe wine' }).filter({ visible: true }).waitFor();
+
+    const boss = await buildMember('keeper', { cellarId: out.id });
+    await removeMember(boss, person.id);
+    await page.getByText('You are no longer in Chalk cave. This is Hay store.').waitFor();
+    await page.waitForURL(/\/shelf$/);
+    await expectAccessible(page);
+    await expectNoSidewaysScroll(page);
+    await page.getByRole('button', { name: 'I have read it' }).click();
+    await page.reload();
+    await page.getByRole('link', { name: 'Start a batch' }).or(page.getByText('Nothing due today')).first().waitFor();
+    expect(await page.getByText('You are no longer in').count()).toBe(0);
+    await context.close();
   });
 });
 

@@ -141,6 +141,40 @@ describe('the limits of a cellar', () => {
   });
 });
 
+describe('the list of sensors', () => {
+  it('names what a sensor is found with by the cellar’s limits, says them in a sentence, and leads to where they are changed', async () => {
+    const owner = await buildMember('keeper');
+    const { sensor, secret } = await buildSensor({ cellarId: owner.cellarId, name: 'Weak float' });
+    await buildSensor({ cellarId: owner.cellarId, name: 'Unheard float' });
+    expect(await send(sensor.identifier, secret, { gravity: 1.04, temperature: 18, battery: 3.2, signal: -84 })).toMatchObject({ stored: 1 });
+    const { page, context } = await browser.visitAs(owner.personId, web.url);
+    await page.goto(`${web.url}/sensors`);
+    const row = page.getByRole('listitem').filter({ hasText: 'Weak float' });
+    await row.getByText('Check').filter({ visible: true }).waitFor();
+    await row.getByText('Signal weak: −84 dBm.').waitFor();
+    await row.getByText(/3\.2 V/).first().waitFor();
+    await page.getByText(/a link is .80 dBm or weaker/).waitFor();
+    await sound(page);
+
+    await page.getByRole('link', { name: 'Change the limits' }).click();
+    await page.getByLabel('signal at or below').fill('-90');
+    await page.getByRole('button', { name: 'Keep it so' }).click();
+    await page.getByText('kept', { exact: true }).waitFor();
+    await page.goto(`${web.url}/sensors`);
+    await page.getByText(/a link is .90 dBm or weaker/).waitFor();
+    const weak = page.getByRole('listitem').filter({ hasText: 'Weak float' });
+    await weak.getByText(/3\.2 V/).first().waitFor();
+    expect(await weak.getByText('Signal weak').count()).toBe(0);
+    await context.close();
+
+    const phone = await browser.visitAs(owner.personId, web.url, { phone: true, night: true });
+    await phone.page.goto(`${web.url}/sensors`);
+    await phone.page.getByRole('listitem').filter({ hasText: 'Weak float' }).getByText('Check').filter({ visible: true }).waitFor();
+    await sound(phone.page);
+    await phone.context.close();
+  });
+});
+
 describe('a room probe and the person’s units', () => {
   it('show on the batch: the room of its place, and a reading typed in °P and °F that is kept as SG and °C', async () => {
     const batch = await buildBatch({ cellarId, name: 'Sloe wine', place: 'Back store', neck: 'airlock', pitchedAt: new Date(Date.now() - 86_400_000), originalGravity: 1.06 });

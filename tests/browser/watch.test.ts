@@ -1,12 +1,12 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Page } from 'playwright-core';
-import { Membership, Person } from '@/db/models';
+import { Alert, Batch, Membership, Person } from '@/db/models';
 import { hashPassword } from '@/lib/auth/passwords';
 import { readingsTopic } from '@/lib/contracts/topics';
 import { expectAccessible, expectNoSidewaysScroll, useBrowser } from '../support/browser';
 import { useDatabase } from '../support/database';
 import { signIn } from '../support/devices';
-import { buildCellar, buildSensor } from '../support/factories';
+import { buildCellar, buildMember, buildSensor } from '../support/factories';
 import { startHouse, type House } from '../support/house';
 import { startProcess, until } from '../support/processes';
 
@@ -223,6 +223,31 @@ describe('a guest', () => {
     for (const name of ['Read by hand', 'Write in the log', 'Set-up', 'Add']) expect(await page.getByRole('button', { name, exact: true }).filter({ visible: true }).count()).toBe(0);
     await context.close();
   });
+});
+
+describe('a shelf of more vessels than one answer holds', () => {
+  it('says how many are shown of how many, and shows the rest when asked', async () => {
+    const keeper = await buildMember('keeper');
+    const days = (count: number) => new Date(Date.now() - count * 86_400_000);
+    const { cellarId: many } = keeper;
+    await Batch.bulkCreate(Array.from({ length: 503 }, (_, index) => ({ cellarId: many, name: `Trial ${index + 1}`, kind: 'cider' as const, drinkColour: 'straw', vesselKind: 'demijohn' as const, volumeL: 4.5, vesselL: 5, neck: 'airlock' as const, state: 'working' as const, createdAt: days(index) })));
+    // The oldest of all: by age alone it would be on no first page.
+    const oldest = await Batch.findOne({ where: { cellarId: many, name: 'Trial 503' }, rejectOnEmpty: true });
+    const call = { verdict: 'yes' as const, kind: 'stuck', since: Date.now(), expectedAt: null, headline: 'Stopped at 1.041.', reason: 'Flat for 31 h.', act: null, changesIt: null, evidence: [] };
+    await Alert.create({ cellarId: many, batchId: oldest.id, call: 'stalled', kind: 'stuck', level: 'check', state: 'open', since: new Date(), openedAt: new Date(), evidence: call });
+    const { page, context } = await browser.visitAs(keeper.personId, house.web.url, { phone: true });
+    await page.goto(`${house.web.url}/shelf`);
+    await page.getByText('Shown are 1 to 500 of 503 vessels').waitFor({ timeout: 60_000 });
+    expect(await page.locator('[data-lane]').count()).toBe(500);
+    expect(await page.locator(`[data-lane="${oldest.id}"]`).count()).toBe(1);
+    await expectNoSidewaysScroll(page);
+    await page.getByRole('button', { name: 'Show the next 3' }).click();
+    await page.getByText('Shown are 501 to 503 of 503 vessels').waitFor({ timeout: 60_000 });
+    expect(await page.locator('[data-lane]').count()).toBe(3);
+    await page.getByRole('button', { name: 'Back to the first' }).click();
+    await page.getByText('Shown are 1 to 500 of 503 vessels').waitFor({ timeout: 60_000 });
+    await context.close();
+  }, 240_000);
 });
 
 describe('without the network', () => {

@@ -13,7 +13,7 @@ export default async function WelcomePage() {
   if (session.actor) redirect('/shelf');
   return (
     <Leaf>
-      <Welcome name={await nameOf(session.personId)} />
+      <Welcome id={session.personId} name={await nameOf(session.personId)} />
     </Leaf>
   );
 }
