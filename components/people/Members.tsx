@@ -99,7 +99,7 @@ export function Members() {
           <Field label="your passphrase" type="password" autoComplete="current-password" autoFocus className="max-w-80" value={passphrase} error={fields.passphrase} onChange={(event) => setPassphrase(event.target.value)} />
           <div className="flex gap-2">
             <Button type="submit" look="final" disabled={busy || passphrase === ''}>
-              Hand over
+              Hand it over
             </Button>
             <Button onClick={() => setHeir(null)}>Keep it</Button>
           </div>
