@@ -59,7 +59,7 @@ export function DeleteAccount() {
           {account.second_factor && <Field label="code of your authenticator" inputMode="numeric" autoComplete="one-time-code" value={form.code} error={fields.code} className="max-w-80" onChange={(event) => setForm({ ...form, code: event.target.value })} />}
           {failed && <FormError>{failed}</FormError>}
           <div className="flex gap-2">
-            <Button type="submit" look="final" disabled={busy}>
+            <Button type="submit" look="final" disabled={busy || form.email.trim().toLowerCase() !== account.email.toLowerCase() || form.passphrase === ''}>
               Delete it for good
             </Button>
             <Button onClick={() => setOpen(false)}>Keep it</Button>

@@ -87,3 +87,14 @@ export async function letterStates(keys: readonly string[]): Promise<Map<string,
 export async function forgetLettersTo(personId: string, transaction: Transaction): Promise<void> {
   await database().query(`delete from letters where person_id = $personId`, { bind: { personId }, transaction });
 }
+
+/** Forgets the address of somebody whose account goes: the invitation they came by, and what the trail says of it. */
+export async function forgetAddress(personId: string, email: string, transaction: Transaction): Promise<void> {
+  const bind = { personId, email };
+  await database().query(
+    `update audit set detail = detail - '{email,invited}'::text[]
+     where (action = 'member.joined' and person_id = $personId) or (action in ('invitation.sent', 'invitation.revoked') and lower(detail->>'email') = lower($email))`,
+    { bind, transaction },
+  );
+  await database().query(`delete from invitations where accepted_by = $personId`, { bind: { personId }, transaction });
+}

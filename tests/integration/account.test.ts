@@ -5,7 +5,8 @@ import type { ManualClock } from '@/lib/clock';
 import { ConflictError, InvalidError, NotFoundError, ThrottledError } from '@/lib/errors';
 import { createCellar } from '@/lib/services/cellars/own';
 import { handOver } from '@/lib/services/cellars/members';
-import { lookAtInvitation } from '@/lib/services/invitations/accept';
+import { joinByInvitation, lookAtInvitation } from '@/lib/services/invitations/accept';
+import { createInvitation, listInvitations } from '@/lib/services/invitations/manage';
 import { askForLink } from '@/lib/services/people/ask-for-link';
 import { askForMailChange, confirmMailChange, dropMailChange } from '@/lib/services/people/change-mail';
 import { deleteAccount } from '@/lib/services/people/delete-account';
@@ -270,6 +271,20 @@ describe('one’s own data', () => {
     expect(file.entries).toMatchObject([{ text: 'Smells clean.', batch: batch.name }]);
     expect(file.cellars).toMatchObject([{ role: 'hand' }]);
     for (const secret of ['argon2', 'Somebody else', other.person.email]) expect(text).not.toContain(secret);
+  });
+
+  it('leaves no address behind, neither in the invitation nor in what the trail says of it', async () => {
+    const keeper = await member();
+    await createInvitation(keeper, { email: 'guest@away.example', role: 'hand', expires_in_days: 7 }, clock);
+    const token = secretIn((await post(mail.server, clock))[0]);
+    await joinByInvitation({ token, name: 'Gil Ash', passphrase: OTHER, time_zone: 'UTC' }, clock);
+    const person = await Person.findOne({ where: { email: 'guest@away.example' }, rejectOnEmpty: true });
+    const trail = async () => JSON.stringify((await AuditRow.findAll({ where: { cellarId: keeper.cellarId } })).map(({ action, detail }) => [action, detail]));
+    expect(await trail()).toContain('guest@away.example');
+    await deleteAccount(person.id, { passphrase: OTHER, email: person.email }, clock);
+    expect(await trail()).not.toContain('guest@away.example');
+    expect(JSON.parse(await trail())).toContainEqual(['member.joined', expect.objectContaining({ role: 'hand' })]);
+    expect((await listInvitations(keeper, clock)).items).toEqual([]);
   });
 
   it('goes with the account: the log stays without a name, a cellar of one’s own goes, a shared one has to be handed over first', async () => {

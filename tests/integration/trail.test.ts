@@ -10,6 +10,7 @@ useDatabase();
 it('the trail says what was done to what, by the names that things have in this cellar', async () => {
   const keeper = await buildMember('keeper');
   const { cellarId, personId } = keeper;
+  const heir = await buildMember('brewer', { cellarId });
   const batch = await buildBatch({ cellarId, name: 'Perry' });
   const { sensor } = await buildSensor({ cellarId, name: 'Float 4' });
   const alert = await Alert.create({ cellarId, batchId: batch.id, call: 'stalled', level: 'check', state: 'open', since: new Date(), openedAt: new Date(), evidence: {} } as never);
@@ -21,6 +22,11 @@ it('the trail says what was done to what, by the names that things have in this 
     ['sensor.rotated', sensor.identifier],
     ['batch.created', batch.id, { name: 'Perry' }],
     ['member.removed', personId],
+    // Who did it, and nobody twice.
+    ['member.left', personId, { role: 'brewer' }],
+    ['member.joined', personId, { role: 'hand', invited: 'una@loft.example' }],
+    ['cellar.handed-over', cellarId, { to: heir.personId }],
+    ['invitation.sent', '00000000-0000-4000-8000-000000000003', { role: 'hand' }],
     // None of ours, gone, or no identifier at all.
     ['batch.muted', foreign.id],
     ['batch.updated', '00000000-0000-4000-8000-000000000002'],
@@ -35,6 +41,10 @@ it('the trail says what was done to what, by the names that things have in this 
     'gave the sensor Float 4 a new secret',
     'started Perry',
     `took ${keeper.person.name} out of the cellar`,
+    'left the cellar',
+    'joined as hand, invited at una@loft.example',
+    `handed the cellar over to ${heir.person.name}`,
+    'invited somebody who has gone as hand',
     'muted a vessel',
     'changed a batch',
     'changed a batch',

@@ -21,7 +21,7 @@ const whereOf = (filter: Filter): Omit<TrailFilter, 'cellarId' | 'limit'> => ({
 });
 
 async function namesIn(rows: readonly TrailRow[], cellarId: string | null): Promise<Map<string, string>> {
-  const people = await namesOf(rows.filter((row) => row.action.startsWith('member.')).map((row) => row.subject));
+  const people = await namesOf(rows.filter(({ action }) => action.startsWith('member.') || action === 'cellar.handed-over').flatMap(about));
   return cellarId === null ? people : new Map([...(await thingNames(cellarId, rows.flatMap(about))), ...people]);
 }
 

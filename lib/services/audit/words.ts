@@ -2,6 +2,9 @@ import type { TrailRow } from '@/db/queries/trail';
 
 const text = (value: unknown): string => (typeof value === 'string' ? value : typeof value === 'number' ? String(value) : '');
 
+/** Whose address went with their account. */
+const GONE = 'somebody who has gone';
+
 type Says = (detail: Record<string, unknown>, subject: string | null) => string;
 
 /** What was done, as a sentence without its first word: who did it stands before it. */
@@ -9,12 +12,12 @@ const SAYS: Record<string, Says> = {
   'member.role-changed': (d, who) => `made ${who ?? 'a member'} ${text(d.to)}, before ${text(d.from)}`,
   'member.removed': (d, who) => `took ${who ?? (text(d.name) || 'a member')} out of the cellar`,
   'member.left': () => 'left the cellar',
-  'member.joined': (d) => `joined as ${text(d.role)}, invited at ${text(d.invited)}`,
-  'invitation.sent': (d) => `invited ${text(d.email)} as ${text(d.role)}`,
-  'invitation.revoked': (d) => `took back the invitation of ${text(d.email)}`,
+  'member.joined': (d) => `joined as ${text(d.role)}${d.invited ? `, invited at ${text(d.invited)}` : ''}`,
+  'invitation.sent': (d) => `invited ${text(d.email) || GONE} as ${text(d.role)}`,
+  'invitation.revoked': (d) => `took back the invitation of ${text(d.email) || GONE}`,
   'cellar.created': () => 'made the cellar',
   'cellar.updated': () => 'changed the cellar’s name or clock',
-  'cellar.handed-over': () => 'handed the cellar over',
+  'cellar.handed-over': (_, heir) => `handed the cellar over${heir === null ? '' : ` to ${heir}`}`,
   'cellar.deleted': (d) => `deleted the cellar ${text(d.name)}`,
   'token.made': (d) => `made the token ${text(d.name)} (…${text(d.last_four)}) as ${text(d.role)}`,
   'token.revoked': (d) => `revoked the token ${text(d.name)} (…${text(d.last_four)})`,
@@ -82,19 +85,24 @@ const SAYS: Record<string, Says> = {
   'lot.moved-against-a-stop': () => 'moved bottles against a stop',
 };
 
+type Named = Pick<TrailRow, 'action' | 'detail' | 'subject' | 'personId'>;
+
 /** Identifiers of what a line is about, the nearest to a person's mind first. */
-export const about = ({ detail, subject }: Pick<TrailRow, 'detail' | 'subject'>): string[] => [text(detail.batch), text(detail.lot), subject].filter((key) => key !== '');
+export const about = ({ detail, subject, ...row }: Named): string[] => [text(detail.batch), text(detail.lot), row.action === 'cellar.handed-over' ? text(detail.to) : subject].filter((key) => key !== '');
+
+/** Whoever did it stands before it already. */
+const ofThemselves = ({ subject, personId }: Named): boolean => subject === personId;
 
 /** For all else the action's own name does: `place.removed` reads “place removed”. What it was done to follows, where that has a name still. */
-export function says(row: Pick<TrailRow, 'action' | 'detail' | 'subject'>, names: ReadonlyMap<string, string>): string {
+export function says(row: Named, names: ReadonlyMap<string, string>): string {
   const thing = about(row).flatMap((key) => names.get(key) ?? [])[0] ?? null;
   const said = saidOf(row, thing);
-  return thing === null || said.includes(thing) ? said : `${said}: ${thing}`;
+  return thing === null || ofThemselves(row) || said.includes(thing) ? said : `${said}: ${thing}`;
 }
 
-function saidOf(row: Pick<TrailRow, 'action' | 'detail' | 'subject'>, thing: string | null): string {
+function saidOf(row: Named, thing: string | null): string {
   const known = SAYS[row.action];
-  if (known) return known(row.detail, row.action.startsWith('member.') ? thing : (thing ?? row.subject));
+  if (known) return known(row.detail, row.action.startsWith('member.') || row.action === 'cellar.handed-over' ? thing : (thing ?? row.subject));
   const name = text(row.detail.name) || text(row.detail.title);
   return `${row.action.replace(/[._-]/g, ' ')}${name ? `: ${name}` : ''}`;
 }

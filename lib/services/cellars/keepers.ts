@@ -23,5 +23,5 @@ export async function memberOf(cellarId: string, personId: string, transaction: 
 export async function requireAnotherKeeper(member: Membership, transaction: Transaction): Promise<void> {
   if (member.role !== 'keeper') return;
   if ((await Membership.count({ where: { cellarId: member.cellarId, role: 'keeper' }, transaction })) > 1) return;
-  throw new ConflictError('A cellar has at least one keeper. Hand it over, or make somebody else keeper first.');
+  throw new ConflictError('A cellar has at least one keeper. Hand it over, or make somebody else keeper first. One that nobody needs any more can be deleted.');
 }

@@ -1,7 +1,7 @@
 import { inTransaction } from '@/db/client';
 import { Membership } from '@/db/models';
 import { forgetCellar, soleKeptBy } from '@/db/queries/cellars';
-import { forgetLettersTo } from '@/db/queries/letters';
+import { forgetAddress, forgetLettersTo } from '@/db/queries/letters';
 import { systemClock, type Clock } from '@/lib/clock';
 import { ConflictError, InvalidError } from '@/lib/errors';
 import { audit } from '../audit/write';
@@ -34,6 +34,7 @@ export async function deleteAccount(personId: string, form: { passphrase: string
       await notifyChange({ cellar: id, kind: 'member', batch: null }, transaction);
     }
     await forgetLettersTo(personId, transaction);
+    await forgetAddress(personId, person.email, transaction);
     await audit({ action: 'account.deleted', subject: personId, personId: null, cellarId: null }, transaction);
     await oweNotice(person, 'account-deleted', personId, now, transaction, null, false);
     await notifyAccess(null, personId, transaction);
