@@ -87,6 +87,11 @@ function Bench({ sensor, calibration, mayChange, timeZone, now }: { sensor: Sens
         )}
       </div>
       {points.length > 0 && <CalibrationPoints points={points} fit={outcome.ok ? outcome.fit : null} mayChange={mayChange} onUse={use} onRemove={(id) => void act(() => removePoint(sensor.id, id))} />}
+      {points.length > 0 && (
+        <p className="type-reason border-b px-(--margin) py-2 text-ink2">
+          In points of gravity. Left over: how far the point lies from the curve. Without it: how far it would lie from a curve drawn by the others alone.
+        </p>
+      )}
       {mayChange && (
         <>
           <KeepFit sensor={sensor.id} points={used.map((point) => point.id)} outcome={outcome} degree={degree} onDegree={setDegree} corrects={corrects} onCorrects={setCorrects} calibration={calibration} timeZone={timeZone} now={now} />
@@ -114,7 +119,7 @@ export function Calibration({ sensor, mayChange, now, timeZone }: { sensor: Sens
   const inForce = sensor.calibration && `version ${sensor.calibration.version} since ${dayName(Date.parse(sensor.calibration.applies_from) / 1000, timeZone)}`;
   return (
     <section aria-label="Calibration">
-      <GroupBar word="Calibration" note={[inForce ?? 'none in force', ...(calibration.turning ? ['readings are being turned'] : []), ...(calibration.waiting > 0 ? [`${calibration.waiting} readings wait`] : [])].join(' · ')} />
+      <GroupBar word="Calibration" note={[inForce ?? 'none in force', ...(calibration.turning ? ['readings are being turned'] : []), ...(calibration.waiting > 0 ? [`${calibration.waiting} ${calibration.waiting === 1 ? 'reading waits' : 'readings wait'}`] : [])].join(' · ')} />
       {calibration.suggestion && <Suggested sensor={sensor.id} suggestion={calibration.suggestion} mayChange={mayChange} timeZone={timeZone} />}
       {leans ? (
         <Bench sensor={sensor} calibration={calibration} mayChange={mayChange} timeZone={timeZone} now={now} />

@@ -29,6 +29,7 @@ export function CalibrationPoints({ points, fit, mayChange, onUse, onRemove }: {
           <th className="py-1.5 pl-3 text-right font-medium">leans</th>
           <th className="py-1.5 pl-3 text-right font-medium max-strip:hidden">at</th>
           <th className="py-1.5 pl-3 text-right font-medium">left over</th>
+          <th className="py-1.5 pl-3 text-right font-medium max-strip:hidden">without it</th>
           <th className="py-1.5 pr-(--margin) text-right font-medium">
             <span className="heard-only">strike out</span>
           </th>
@@ -53,9 +54,11 @@ export function CalibrationPoints({ points, fit, mayChange, onUse, onRemove }: {
               <td className="whitespace-nowrap py-1.5 pl-3 text-right font-semibold">{gravityText(point.gravity)}</td>
               <td className="whitespace-nowrap py-1.5 pl-3 text-right">{point.inclination.toFixed(1)}°</td>
               <td className="whitespace-nowrap py-1.5 pl-3 text-right max-strip:hidden">{temperatureText(point.temperature, 0)}</td>
-              <td className="whitespace-nowrap py-1.5 pl-3 text-right" title={result?.missedBy == null ? undefined : `without it the curve would miss it by ${signedPoints(result.missedBy)} points`}>
+              <td className="whitespace-nowrap py-1.5 pl-3 text-right">
                 {result ? signedPoints(result.leftOver) : '–'}
+                {result?.missedBy != null && <span className="type-label block text-ink2 strip:hidden">without it {signedPoints(result.missedBy)}</span>}
               </td>
+              <td className="whitespace-nowrap py-1.5 pl-3 text-right text-ink2 max-strip:hidden">{result?.missedBy == null ? '–' : signedPoints(result.missedBy)}</td>
               <td className="py-1 pl-3 pr-(--margin) text-right">
                 {mayChange && (
                   <Button size="lane" look="quiet" aria-label={`Strike out ${gravityText(point.gravity)} at ${point.inclination.toFixed(1)} degrees`} onClick={() => onRemove(point.id)}>

@@ -47,7 +47,7 @@ function factsOf(sensor: SensorBody, health: SensorHealthBody | undefined, now: 
     ...own,
     { name: 'temperature', value: temperatureWords(sensor.last?.temperature) },
     { name: 'cell', value: cellWords(sensor.last?.battery), note: daysWords(battery?.days ?? null) },
-    { name: 'link', value: linkWords(signal?.dbm ?? sensor.last?.signal, health?.limits.weak_signal_dbm), note: signal ? `weakest −${Math.abs(Math.round(signal.weakest))}` : null },
+    { name: 'link', value: linkWords(signal?.dbm ?? sensor.last?.signal, health?.limits.weak_signal_dbm), note: signal ? `weakest −${Math.abs(Math.round(signal.weakest))} dBm` : null },
     { name: 'missed in 24 h', value: gaps ? `${gaps.missed} of ${gaps.heard + gaps.missed}` : 'sends no numbers', note: gaps && gaps.restarts > 0 ? `started again ${gaps.restarts} ×` : null },
     { name: 'its clock', value: health ? clockWords(health.clock_offset_s) : '–' },
   ];

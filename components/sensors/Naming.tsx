@@ -27,8 +27,9 @@ export function Naming({ sensor }: { sensor: SensorBody }) {
     <form noValidate onSubmit={(event) => void submit(event)} className="flex flex-col gap-3 border-b px-(--margin) py-4">
       {failed && <FormError>{failed}</FormError>}
       <div className="flex flex-wrap items-start gap-3">
-        <Field label="name" name="name" defaultValue={sensor.name} maxLength={60} autoComplete="off" error={error} className="min-w-40 flex-1" />
-        <Select label="speaks every" name="interval_s" defaultValue={sensor.interval_s} className="w-32">
+        {/* Anew where it was changed elsewhere: a sensor that confirms its settings would be set back. */}
+        <Field key={sensor.name} label="name" name="name" defaultValue={sensor.name} maxLength={60} autoComplete="off" error={error} className="min-w-40 flex-1" />
+        <Select key={sensor.interval_s} label="speaks every" name="interval_s" defaultValue={sensor.interval_s} className="w-32">
           <IntervalOptions given={sensor.interval_s} />
         </Select>
       </div>

@@ -54,7 +54,7 @@ export function OwnOffset({ sensor, timeZone, now }: { sensor: string; timeZone:
   }
   return (
     <details className="border-b px-(--margin) py-2">
-      <summary className="type-label inline-flex min-h-8 cursor-pointer items-center text-ink2">move it by hand</summary>
+      <summary className="type-label inline-flex min-h-8 cursor-pointer items-center text-ink2">move its gravity by points of your own</summary>
       <div className="flex flex-col gap-3 pb-2 pt-1">
         {failed && <FormError>{failed}</FormError>}
         <div className="flex flex-wrap items-start gap-3">

@@ -113,5 +113,5 @@ function turnsBack(coefficients: readonly number[], span: { from: number; to: nu
     }
     sign = Math.sign(slope) || sign;
   }
-  return `The curve turns back near ${place.toFixed(1)}°: one inclination would mean two gravities. ${degree > 1 ? 'Take a lower degree, or add points there.' : 'Look for a point that is wrong.'}`;
+  return `The curve turns back near ${place.toFixed(1)}°: one inclination would mean two gravities. ${degree > 1 ? 'Leave out a point that is wrong, take a straighter curve, or add points there.' : 'Leave out the point that is wrong.'}`;
 }
