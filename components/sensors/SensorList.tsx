@@ -1,8 +1,8 @@
 'use client';
 
 import Link from 'next/link';
-import { useMemo } from 'react';
-import { LinkButton } from '@/components/ui/Button';
+import { useMemo, useState } from 'react';
+import { Button, LinkButton } from '@/components/ui/Button';
 import { Haze } from '@/components/ui/Haze';
 import { EmptyState, ErrorState } from '@/components/ui/Notice';
 import { useNow } from '@/components/ui/now';
@@ -57,7 +57,7 @@ function Row({ sensor, health, limits, now, timeZone }: { sensor: SensorBody; he
                 {sensor.batch.name}
               </Link>
             ) : (
-              <span className="text-ink2">no vessel</span>
+              <span className="break-words text-ink2">{sensor.place ?? 'no vessel'}</span>
             )}
           </Cell>
           <Cell name="heard">{heardWords(sensor, now, timeZone)}</Cell>
@@ -102,10 +102,14 @@ function inOrder(sensors: readonly SensorBody[], healthOf: ReadonlyMap<string, S
   return [...sensors].sort((a, b) => rank(a) - rank(b) || a.name.localeCompare(b.name, 'en', { numeric: true }));
 }
 
+/** What one answer holds at most. */
+const PAGE = 200;
+
 /** All sensors of the cellar: where they are, when they were heard, how they are. */
 export function SensorList() {
   const { me, may } = useMe();
-  const { sensors, error, loading, retry } = useSensors({ limit: 200 });
+  const [cursor, setCursor] = useState<string | null>(null);
+  const { sensors, nextCursor, error, loading, retry } = useSensors({ limit: PAGE, ...(cursor !== null && { cursor }) });
   const { data: health } = useSensorsHealth();
   const healthOf = useMemo(() => new Map(health?.items.map((item) => [item.sensor, item])), [health]);
   const nowMs = useNow();
@@ -119,7 +123,7 @@ export function SensorList() {
   );
   return (
     <>
-      <PageHead title="Sensors" meta={sensors && sensors.length > 0 && `${sensors.length} in this cellar${silent > 0 ? `, ${silent} silent` : ''}`}>
+      <PageHead title="Sensors" meta={sensors && sensors.length > 0 && `${cursor !== null || nextCursor !== null ? `${sensors.length} shown` : `${sensors.length} in this cellar`}${silent > 0 ? `, ${silent} silent` : ''}`}>
         {sensors && sensors.length > 0 && create}
       </PageHead>
       {loading && (
@@ -154,6 +158,13 @@ export function SensorList() {
               <Row key={sensor.id} sensor={sensor} health={healthOf.get(sensor.id)} limits={health?.limits} now={now} timeZone={timeZone} />
             ))}
           </ul>
+          {(cursor !== null || nextCursor !== null) && (
+            <div className="flex flex-wrap items-center gap-3 border-b bg-desk px-(--margin) py-2">
+              <p className="type-body mr-auto">This cellar has more sensors than one list holds.</p>
+              {cursor !== null && <Button onClick={() => setCursor(null)}>Back to the first</Button>}
+              {nextCursor !== null && <Button onClick={() => setCursor(nextCursor)}>Show the next</Button>}
+            </div>
+          )}
           {health && (
             <p className="type-reason border-b px-(--margin) py-2 text-ink2">
               This list says so when <Sentence>{limitWords(health.limits)}</Sentence>{' '}
