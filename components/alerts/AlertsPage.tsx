@@ -1,5 +1,6 @@
 'use client';
 
+import Link from 'next/link';
 import { useSearchParams } from 'next/navigation';
 import { useState } from 'react';
 import { FilterTabs } from '@/components/ui/FilterTabs';
@@ -11,7 +12,9 @@ import { GroupBar } from '@/components/ui/Page';
 import { resolveAlert, useAlerts } from '@/lib/client/alerts';
 import { ClientError } from '@/lib/client/fetcher';
 import { useMe } from '@/lib/client/me';
+import { useMessages } from '@/lib/client/messages';
 import type { AlertBody } from '@/lib/contracts/alerts';
+import { clockOf } from '@/components/messages/words';
 import { AlertDetail } from './AlertDetail';
 import { AlertRow } from './AlertRow';
 import { byNeed } from './rows';
@@ -27,6 +30,19 @@ const GROUPS: { state: AlertBody['state']; word: string; note: string }[] = [
 /** Cleared alerts shown before somebody asks for more. */
 const CLEARED_FIRST = 8;
 const STEP = 40;
+
+/** Why an alert of the night may be told in the morning. */
+function QuietHours() {
+  const { messages } = useMessages();
+  if (!messages?.quiet) return null;
+  return (
+    <p className="type-label ml-auto text-ink2 max-strip:w-full">
+      <Link href="/settings/messages" className="no-underline hover:underline">
+        your quiet hours {clockOf(messages.quiet.from)} to {clockOf(messages.quiet.to)}; what can hurt still rings
+      </Link>
+    </p>
+  );
+}
 
 export function AlertsPage() {
   const { me, may, error: meError, retry: retryMe } = useMe();
@@ -95,6 +111,7 @@ export function AlertsPage() {
               { value: 'resolved', name: 'Cleared', count: counts?.resolved },
             ]}
           />
+          <QuietHours />
         </div>
         {failed && <FormError>{failed}</FormError>}
         {everything.length === 0 && (

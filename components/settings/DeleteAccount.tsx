@@ -51,7 +51,7 @@ export function DeleteAccount() {
           noValidate
           onSubmit={(event) => {
             event.preventDefault();
-            void act(() => deleteAccount({ email: form.email, passphrase: form.passphrase, ...(form.code && { code: form.code }) })).then((done) => done && void signOut());
+            void act(() => deleteAccount({ email: form.email, passphrase: form.passphrase, ...(form.code && { code: form.code }) })).then((done) => done && void signOut('deleted'));
           }}
         >
           <Field label={`type your address: ${account.email}`} type="email" autoComplete="off" value={form.email} error={fields.email} className="max-w-80" onChange={(event) => setForm({ ...form, email: event.target.value })} />

@@ -24,7 +24,7 @@ export function useBelonging(): void {
   useEffect(() => {
     // The whole page goes, and with it whatever it still held of the cellar.
     /* eslint-disable @next/next/no-location-assign-relative-destination -- a router would keep the page's memory */
-    if (status === 401) window.location.assign(`/sign-in?next=${encodeURIComponent(window.location.pathname)}`);
+    if (status === 401) window.location.assign(`/sign-in?said=ended&next=${encodeURIComponent(window.location.pathname)}`);
     if (status === 403) {
       if (shown.current) noteLeft(shown.current.person, shown.current.name);
       window.location.assign('/welcome');

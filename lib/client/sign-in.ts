@@ -28,7 +28,7 @@ export const signInWithPassword = ({ stay, code = '', ...form }: { email: string
 export const signInByLink = (token: string, code = '') => attempt('link', { token, code });
 
 /** Ends this sign-in and goes to the sign-in page; what was kept here of the person goes too. */
-export async function signOut(): Promise<void> {
+export async function signOut(said?: 'deleted'): Promise<void> {
   await Promise.allSettled([dropDevice(), forgetKept()]);
-  await endSession({ callbackUrl: '/sign-in' });
+  await endSession({ callbackUrl: said ? `/sign-in?said=${said}` : '/sign-in' });
 }

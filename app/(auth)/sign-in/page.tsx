@@ -13,8 +13,16 @@ function pageOf(to: string | string[] | undefined): string {
   return typeof to === 'string' && /^\/(?![/\\])/.test(to) ? to : '/shelf';
 }
 
-export default async function SignInPage({ searchParams }: { searchParams: Promise<{ next?: string | string[] }> }) {
-  const to = pageOf((await searchParams).next);
+/** Why somebody stands here who did not ask to. */
+const SAID: Record<string, string> = {
+  deleted: 'Your account is deleted. A mail confirms it.',
+  ended: 'This sign-in has ended. Sign in to go on.',
+};
+
+export default async function SignInPage({ searchParams }: { searchParams: Promise<{ next?: string | string[]; said?: string | string[] }> }) {
+  const { next, said } = await searchParams;
+  const to = pageOf(next);
+  const sentence = typeof said === 'string' && Object.hasOwn(SAID, said) ? SAID[said] : null;
   if (await currentSession()) redirect(to);
   return (
     <div className="flex min-h-dvh flex-col wide:flex-row">
@@ -27,6 +35,11 @@ export default async function SignInPage({ searchParams }: { searchParams: Promi
       <div className="flex flex-col justify-center px-(--margin) py-8 max-wide:border-t-[1.5px] max-wide:border-ink wide:w-[461px] wide:border-l-[1.5px] wide:border-ink wide:pl-[57px] wide:pr-14">
         <div className="w-full max-w-[420px] wide:-mt-32">
           <UnsentNotice />
+          {sentence && (
+            <p role="status" className="type-body mb-5 border-l-[3px] border-ink bg-lit py-2 pl-3 pr-3">
+              {sentence}
+            </p>
+          )}
           <SignInForm to={to} />
         </div>
       </div>
