@@ -53,11 +53,23 @@ function factsOf(sensor: SensorBody, health: SensorHealthBody | undefined, now: 
   ];
 }
 
-function Findings({ health }: { health: SensorHealthBody }) {
+/** What a sensor tells of itself; what it does not tell is not called good. */
+function toldOf(sensor: SensorBody, { signal, gaps, clock_offset_s: offset }: SensorHealthBody): string[] {
+  const told = [sensor.last?.battery != null && 'cell', signal && 'link', offset !== null && 'clock', gaps && 'numbers'];
+  return told.filter((word): word is string => typeof word === 'string');
+}
+
+function soundWords(told: readonly string[]): string {
+  if (told.length === 0) return 'It is heard. Of its cell, link, clock and numbers it tells nothing.';
+  const names = told.length === 1 ? told[0]! : `${told.slice(0, -1).join(', ')} and ${told.at(-1)}`;
+  return `${names.charAt(0).toUpperCase()}${names.slice(1)} ${told.length === 1 && told[0] !== 'numbers' ? 'is' : 'are'} within the cellar’s limits.${told.length < 4 ? ' Of the rest it tells nothing.' : ''}`;
+}
+
+function Findings({ sensor, health }: { sensor: SensorBody; health: SensorHealthBody }) {
   return health.findings.length === 0 ? (
     <div className="border-b px-(--margin) py-3">
       <State state="Done" word="As it should be" />
-      <p className="type-body pt-1 text-ink2">Cell, link, clock and numbers are within the cellar’s limits.</p>
+      <p className="type-body pt-1 text-ink2">{soundWords(toldOf(sensor, health))}</p>
     </div>
   ) : (
     <ul>
@@ -87,7 +99,7 @@ export function Health({ sensor, now, timeZone }: { sensor: SensorBody; now: num
           {error.message}
         </ErrorState>
       )}
-      {health && <Findings health={health} />}
+      {health && <Findings sensor={sensor} health={health} />}
       <dl className="grid grid-cols-2 border-b strip:grid-cols-4 wide:grid-cols-2">
         {factsOf(sensor, health, now, timeZone).map((fact) => (
           <div key={fact.name} className="min-w-0 border-b border-rule px-(--margin) py-2">

@@ -28,7 +28,9 @@ export function ProbeReadings({ sensor, now, timeZone }: { sensor: SensorBody; n
     })
     .reverse();
   const [first, last] = [said[0], said.at(-1)];
-  const y = scaleOf(foam ? [0, ...said.map((point) => point.value)] : said.map((point) => point.value), 5);
+  const scale = scaleOf(foam ? [0, ...said.map((point) => point.value)] : said.map((point) => point.value), 5);
+  // No foam stands below the drink.
+  const y = foam ? { ...scale, from: 0, ticks: scale.ticks.filter((tick) => tick >= 0) } : scale;
   const up = placed(y, HEIGHT - 24, 10);
   const x = (at: number) => LEFT + (width - LEFT - RIGHT) * (first && last && last.at > first.at ? (at - first.at) / (last.at - first.at) : 1);
   return (

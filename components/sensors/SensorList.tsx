@@ -64,7 +64,7 @@ function Row({ sensor, health, limits, now, timeZone }: { sensor: SensorBody; he
           <Cell name="said">
             {sensor.last ? (
               <>
-                <b className="font-semibold">{gravityWords(sensor.last.gravity)}</b> {temperatureWords(sensor.last.temperature)}
+                {sensor.kind === 'float' && <b className="font-semibold">{gravityWords(sensor.last.gravity)}</b>} {temperatureWords(sensor.last.temperature)}
               </>
             ) : (
               '–'

@@ -130,7 +130,7 @@ describe('taken out of one of two cellars', () => {
     const { page, context } = await browser.visitAs(person.id, house.web.url, { phone: true });
     await page.goto(`${house.web.url}/shelf`);
     await page.getByRole('button', { name: /Show another cellar/ }).click();
-    await page.getByRole('button', { name: 'Chalk cave' }).click();
+    await page.getByRole('button', { name: 'Chalk cave', exact: true }).click();
     await page.getByRole('button', { name: /Chalk cave.*Show another cellar/ }).waitFor();
     await page.goto(`${house.web.url}/batches/${batch.id}`);
     await page.getByRole('heading', { level: 1, name: 'Sloe wine' }).filter({ visible: true }).waitFor();
