@@ -20,6 +20,8 @@ export interface ImportedBatch {
   originalGravity: number | null;
   finalGravity: number | null;
   volumeL: number;
+  /** The file names no volume: a demijohn's is taken. */
+  volumeTaken: boolean;
   vesselL: number;
   yeast: string | null;
   notes: string | null;
@@ -32,7 +34,7 @@ const NAMES: Record<BatchField, RegExp> = {
   ended: /end|bottl|keg|finish|pack/i,
   original_gravity: /^og$|original|starting[ _]gravity/i,
   final_gravity: /^fg$|final/i,
-  volume: /volume|litre|liter|^l$|batch[ _]size/i,
+  volume: /volume|litre|liter|^l$|size|amount|gallon/i,
   vessel: /vessel|carboy|fermenter|demijohn/i,
   yeast: /yeast/i,
   notes: /note|comment|remark/i,
@@ -58,6 +60,25 @@ export function guessBatches(header: readonly string[], timeZone: string): Batch
   return { columns, timeZone, dateOrder: 'day' };
 }
 
+/** NIST Handbook 44 (2024), appendix C: 1 gal of the US is 3.785 411 784 L, an imperial one 4.546 09 L. */
+const LITRES: [RegExp, number][] = [
+  [/^(l|lt|ltr|litres?|liters?)?$/i, 1],
+  [/^ml$/i, 0.001],
+  [/^us ?gal(lons?)?$/i, 3.785411784],
+  [/^(imp(erial)?|uk) ?gal(lons?)?$/i, 4.54609],
+];
+
+/** Litres of `5 L`, `4,5`, `1 US gal`; null: not understood. */
+function litresIn(cell: string): number | null {
+  const [, figure = '', unit = ''] = /^([\d.,\s]+)\s*(.*)$/.exec(cell) ?? [];
+  const value = numberIn(figure);
+  const litres = LITRES.find(([words]) => words.test(unit.replace(/\./g, '').trim()))?.[1];
+  return value === null || litres === undefined ? null : value * litres;
+}
+
+/** A demijohn's fill, L, where the file says nothing. */
+const TAKEN_L = 4.5;
+
 const gravityOk = (value: number | null) => value === null || (value >= 0.97 && value <= 1.2);
 const CONTROL = /[\u0000-\u0008\u000b\u000c\u000e-\u001f\u007f]/;
 
@@ -78,12 +99,15 @@ export function batchIn(row: readonly string[], options: BatchOptions, latest: n
   if (cell('ended') !== '' && endedAt === null) return `“${cell('ended').slice(0, 40)}” is no time`;
   if ((pitchedAt ?? 0) > latest || (endedAt ?? 0) > latest) return 'a time lies ahead';
   if (pitchedAt !== null && endedAt !== null && endedAt < pitchedAt) return 'it ended before it was pitched';
+  for (const field of ['original_gravity', 'final_gravity'] as const) if (cell(field) !== '' && gravity(field) === null) return `“${cell(field).slice(0, 40)}” is no gravity`;
   const [originalGravity, finalGravity] = [gravity('original_gravity'), gravity('final_gravity')];
   if (!gravityOk(originalGravity) || !gravityOk(finalGravity)) return 'a gravity cannot be';
-  const volumeL = numberIn(cell('volume')) ?? 4.5;
-  const vesselL = Math.max(volumeL, numberIn(cell('vessel')) ?? 0);
+  const given = litresIn(cell('volume'));
+  if (cell('volume') !== '' && given === null) return `“${cell('volume').slice(0, 40)}” is no volume: write litres, US gal or imp gal`;
+  const volumeL = given ?? TAKEN_L;
+  const vesselL = Math.max(volumeL, litresIn(cell('vessel')) ?? 0);
   if (!(volumeL >= 0.1 && vesselL <= 2_000)) return 'the volume must be 0.1 to 2000 L';
   const told = cell('kind');
   const kind = DRINK_KINDS.find((drink) => drink === told.toLowerCase()) ?? KINDS.find(([names]) => names.test(`${told} ${name}`))?.[1] ?? 'beer';
-  return { name, kind, pitchedAt, endedAt, originalGravity, finalGravity, volumeL, vesselL, yeast: cell('yeast').slice(0, 80) || null, notes: cell('notes').slice(0, 2_000) || null };
+  return { name, kind, pitchedAt, endedAt, originalGravity, finalGravity, volumeL, volumeTaken: given === null, vesselL, yeast: cell('yeast').slice(0, 80) || null, notes: cell('notes').slice(0, 2_000) || null };
 }

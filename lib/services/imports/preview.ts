@@ -15,7 +15,7 @@ const ERRORS_SHOWN = 100;
 const day = (at: number | null) => (at === null ? '–' : iso(at).slice(0, 10));
 
 const readingWords = (reading: ImportedReading) => `${iso(reading.at).slice(0, 16).replace('T', ' ')} UTC, ${reading.gravity.toFixed(3)}${reading.temperature === null ? '' : `, ${reading.temperature.toFixed(1)} °C`}`;
-const batchWords = (batch: ImportedBatch) => `${batch.name}, ${batch.kind}, ${day(batch.pitchedAt)} to ${day(batch.endedAt)}, ${batch.originalGravity?.toFixed(3) ?? '–'} to ${batch.finalGravity?.toFixed(3) ?? '–'}, ${batch.volumeL} L`;
+const batchWords = (batch: ImportedBatch) => `${batch.name}, ${batch.kind}, ${day(batch.pitchedAt)} to ${day(batch.endedAt)}, ${batch.originalGravity?.toFixed(3) ?? '–'} to ${batch.finalGravity?.toFixed(3) ?? '–'}, ${Number(batch.volumeL.toFixed(2))} L${batch.volumeTaken ? ', as the file names no volume' : ''}`;
 
 /** Looks at a file: what it would bring, and what is wrong with it, line by line. Nothing is kept. */
 export async function previewImport(actor: Actor, form: ImportPreviewForm, clock: Clock = systemClock): Promise<ImportPreviewBody> {

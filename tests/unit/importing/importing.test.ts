@@ -83,8 +83,15 @@ describe('a list of old batches', () => {
   const options = guessBatches(header, 'UTC');
   it('is understood from its header', () => {
     expect(batchIn(['Windfall', 'Perry', '2024-09-01', '2024-11-01', '1.050', '1.002', '9', 'cider yeast', 'tart'], options, NOW)).toEqual({
-      name: 'Windfall', kind: 'cider', pitchedAt: Date.UTC(2024, 8, 1), endedAt: Date.UTC(2024, 10, 1), originalGravity: 1.05, finalGravity: 1.002, volumeL: 9, vesselL: 9, yeast: 'cider yeast', notes: 'tart',
+      name: 'Windfall', kind: 'cider', pitchedAt: Date.UTC(2024, 8, 1), endedAt: Date.UTC(2024, 10, 1), originalGravity: 1.05, finalGravity: 1.002, volumeL: 9, volumeTaken: false, vesselL: 9, yeast: 'cider yeast', notes: 'tart',
     });
+  });
+  // NIST Handbook 44 (2024), appendix C: a US gallon is 3.785 411 784 L, an imperial one 4.546 09 L.
+  it.each([['5 L', 5], ['4,5', 4.5], ['750 ml', 0.75], ['1 US gal', 3.785411784], ['2 imp. gal', 9.09218], ['', 4.5]])('reads the volume “%s” in its own unit', (cell, litres) => {
+    const read = batchIn(['A', 'beer', '', '', '', '', cell], options, NOW);
+    if (typeof read === 'string') throw new Error(read);
+    expect(read.volumeL).toBeCloseTo(litres, 9);
+    expect(read.volumeTaken).toBe(cell === '');
   });
   it.each([
     [['', 'beer'], 'the name is empty'],
@@ -94,6 +101,9 @@ describe('a list of old batches', () => {
     [['A', 'beer', '2024-11-01', '2024-09-01'], 'it ended before it was pitched'],
     [['A', 'beer', '', '', '3'], 'a gravity cannot be'],
     [['A', 'beer', '', '', '', '', '9000'], 'the volume must be 0.1 to 2000 L'],
+    [['A', 'beer', '', '', '', '', '1 gal'], '“1 gal” is no volume: write litres, US gal or imp gal'],
+    [['A', 'beer', '', '', '', '', 'two'], '“two” is no volume: write litres, US gal or imp gal'],
+    [['A', 'beer', '', '', 'high'], '“high” is no gravity'],
   ])('says what is wrong with %j', (row, says) => {
     expect(batchIn(row, options, NOW)).toBe(says);
   });
