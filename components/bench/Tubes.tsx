@@ -73,7 +73,7 @@ export function Tubes({ bottle, lows }: { bottle: BottlePicture; /** Lower ends,
         {ticks.lines.map((bar) => (
           <g key={bar}>
             <path d={`M${LEFT} ${y(bar)}H${width}`} stroke="var(--rule)" />
-            {bar % ticks.named === 0 && Math.abs(y(bar) - y(limit)) > 16 && (
+            {bar % ticks.named === 0 && (y(bar) < y(limit) - 28 || y(bar) > y(limit) + 20) && (
               <text x={LEFT - 12} y={y(bar) + 4} textAnchor="end" fontSize="12" fill="var(--ink2)">
                 {bar}
               </text>

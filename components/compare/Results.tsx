@@ -62,7 +62,7 @@ export function Results({ items }: { items: readonly Compared[] }) {
             {rows.map((row) => (
               <tr key={row.name} className="border-b border-rule align-baseline">
                 <th scope="row" className="type-label py-1.5 pl-(--margin) pr-4 text-left font-medium text-ink2">
-                  <div className="flex flex-wrap items-baseline justify-between gap-x-4">
+                  <div className="flex flex-wrap items-baseline gap-x-4">
                     {row.name}
                     {row.how && <How how={row.how} of={row.name} className="max-w-56 open:basis-full" />}
                   </div>

@@ -52,7 +52,7 @@ export function AddPhoto({ place, on, own: byOwner = true }: PhotosProps) {
         <input ref={input} id={id} type="file" accept="image/jpeg,image/png,image/webp,image/avif" multiple disabled={state === 'sending'} className="absolute inset-0 cursor-pointer opacity-0" onChange={(event) => void send(event.target.files)} />
         {state === 'sending' ? 'keeping the photo' : photos?.some((photo) => hangsOn(photo, on)) ? 'add another photo' : 'add a photo'}
       </label>
-      <span role="status" className="type-label text-madder">
+      <span role="status" className="type-label text-madder empty:absolute">
         {failed}
       </span>
     </>
