@@ -146,13 +146,12 @@ describe('the list of sensors', () => {
     const owner = await buildMember('keeper');
     const { sensor, secret } = await buildSensor({ cellarId: owner.cellarId, name: 'Weak float' });
     await buildSensor({ cellarId: owner.cellarId, name: 'Unheard float' });
-    expect(await send(sensor.identifier, secret, { gravity: 1.04, temperature: 18, battery: 3.2, signal: -84 })).toMatchObject({ stored: 1 });
+    expect(await send(sensor.identifier, secret, { gravity: 1.04, temperature: 18, battery: 4.1, signal: -84 })).toMatchObject({ stored: 1 });
     const { page, context } = await browser.visitAs(owner.personId, web.url);
     await page.goto(`${web.url}/sensors`);
     const row = page.getByRole('listitem').filter({ hasText: 'Weak float' });
-    await row.getByText('Check').filter({ visible: true }).waitFor();
+    await row.getByText('Link weak').filter({ visible: true }).waitFor();
     await row.getByText('Signal weak: −84 dBm.').waitFor();
-    await row.getByText(/3\.2 V/).first().waitFor();
     await page.getByText(/a link is .80 dBm or weaker/).waitFor();
     await sound(page);
 
@@ -163,13 +162,13 @@ describe('the list of sensors', () => {
     await page.goto(`${web.url}/sensors`);
     await page.getByText(/a link is .90 dBm or weaker/).waitFor();
     const weak = page.getByRole('listitem').filter({ hasText: 'Weak float' });
-    await weak.getByText(/3\.2 V/).first().waitFor();
+    await weak.getByText('Heard', { exact: true }).filter({ visible: true }).waitFor();
     expect(await weak.getByText('Signal weak').count()).toBe(0);
     await context.close();
 
     const phone = await browser.visitAs(owner.personId, web.url, { phone: true, night: true });
     await phone.page.goto(`${web.url}/sensors`);
-    await phone.page.getByRole('listitem').filter({ hasText: 'Weak float' }).getByText('Check').filter({ visible: true }).waitFor();
+    await phone.page.getByRole('listitem').filter({ hasText: 'Weak float' }).getByText('Heard', { exact: true }).filter({ visible: true }).waitFor();
     await sound(phone.page);
     await phone.context.close();
   });
