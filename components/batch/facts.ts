@@ -54,7 +54,7 @@ export function factsOf(batch: BatchBody, last: LastReading | null, now: number,
   return [
     { name: 'pitched', figure: batch.pitched_at ? dayName(seconds(batch.pitched_at), timeZone) : 'not yet', more: day === null ? null : `day ${day}`, phone: false },
     { name: 'original gravity', figure: og === null ? 'not told' : gravityText(og), more: null, phone: true },
-    { name: judged?.gravity ? 'now' : 'last known', ...gravityFact(batch, last, now, timeZone), phone: true },
+    { name: judged?.gravity && batch.state === 'working' ? 'now' : 'last known', ...gravityFact(batch, last, now, timeZone), phone: true },
     { name: 'bed', figure: bed ? gravityText(bed.value) : 'not known', more: bed && doubt(bed), phone: false },
     { name: 'attenuation', figure: fallen === null ? '–' : `${Math.round(fallen)} %`, more: attenuable === null ? null : `of ${attenuable}`, phone: true },
     { name: 'strength so far', figure: judged?.abv_percent ? percent(judged.abv_percent.value) : '–', more: judged?.expected_abv_percent ? `of ${judged.expected_abv_percent.value.toFixed(1)}` : null, phone: true },
