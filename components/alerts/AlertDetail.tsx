@@ -103,7 +103,7 @@ export function AlertDetail({ alert, now, timeZone, mayTake, mayClear, taking, o
   const told = toldLines(alert, now, timeZone);
   const gone = alert.state === 'resolved' ? null : goneSentence(alert, now, timeZone);
   return (
-    <article aria-label={`${word}, ${alert.batch.name}`} className="flex flex-col gap-5 px-(--margin) py-4 strip:bg-lit">
+    <article aria-label={`${word}, ${alert.batch.name}`} className="flex min-w-0 flex-col [overflow-wrap:anywhere] gap-5 px-(--margin) py-4 strip:bg-lit">
       <button type="button" onClick={onBack} className="type-label -mb-3 -ml-2 inline-flex min-h-11 items-center gap-1 self-start px-2 text-ink2 strip:hidden">
         <BackIcon size={11} /> Alerts
       </button>

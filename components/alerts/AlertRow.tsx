@@ -40,7 +40,7 @@ export function AlertRow({ alert, now, timeZone, chosen, mayTake, mayClear, onCh
           {alertMeta(alert, now, timeZone)}
         </p>
       </div>
-      <div className="type-label text-ink2 max-strip:col-start-2">
+      <div className="type-label min-w-0 text-ink2 [overflow-wrap:anywhere] max-strip:col-start-2">
         {alertFate(alert, now, timeZone).map((line) => (
           <p key={line.text} className={line.strong ? 'font-bold text-ink' : ''}>
             {line.text}

@@ -2,7 +2,7 @@
 
 import { useRouter } from 'next/navigation';
 import { useState, type FormEvent } from 'react';
-import { Button } from '@/components/ui/Button';
+import { ANY_LENGTH, Button } from '@/components/ui/Button';
 import { Field } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
 import { GroupBar } from '@/components/ui/Page';
@@ -83,7 +83,7 @@ function DeleteCellar({ cellar }: { cellar: MeBody['cellar'] }) {
       <div className={FORM}>
         <p className="type-body max-w-[62ch] text-ink2">All batches, readings, bottles, must sheets and the trail go, for everybody who shares it. Nothing brings them back: export first what you want to keep.</p>
         {!open ? (
-          <Button className="self-start" onClick={() => setOpen(true)}>
+          <Button className={`self-start ${ANY_LENGTH}`} onClick={() => setOpen(true)}>
             Delete {cellar.name}
           </Button>
         ) : (
@@ -151,7 +151,7 @@ export function CellarSettings() {
         <div className={FORM}>
           {failed && <FormError>{failed}</FormError>}
           <div>
-            <Sure word={`Leave ${me.cellar.name}`} yes="Leave it" no="Stay" busy={busy} onSure={() => void act(() => leaveCellar()).then((done) => done && router.push('/shelf'))}>
+            <Sure word={`Leave ${me.cellar.name}`} yes="Leave it" no="Stay" className={ANY_LENGTH} busy={busy} onSure={() => void act(() => leaveCellar()).then((done) => done && router.push('/shelf'))}>
               Your tokens and calendar address for it stop. What you logged stays.
             </Sure>
           </div>

@@ -26,6 +26,9 @@ const SIZES: Record<ButtonSize, string> = {
 export const buttonClass = (look: ButtonLook, size: ButtonSize, more = '') =>
   `type-button max-strip:text-[0.84375rem] inline-flex shrink-0 items-center justify-center whitespace-nowrap rounded border-[1.5px] text-center no-underline transition-colors duration-100 ${LOOKS[look]} ${SIZES[size]} ${more}`;
 
+/** For a button that says a name of any length: it breaks in lines. */
+export const ANY_LENGTH = 'max-w-full shrink! whitespace-normal! text-left! py-1.5 [overflow-wrap:anywhere]';
+
 interface Looks {
   look?: ButtonLook;
   size?: ButtonSize;

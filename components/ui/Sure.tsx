@@ -4,11 +4,11 @@ import { useState, type ReactNode } from 'react';
 import { Button, type ButtonSize } from './Button';
 
 /** A button for what cannot be undone: asks once more, in place. */
-export function Sure({ word, yes, no = 'Leave it', size = 'normal', busy, onSure, children }: { word: string; yes: string; no?: string; size?: ButtonSize; busy: boolean; onSure: () => void; children?: ReactNode }) {
+export function Sure({ word, yes, no = 'Leave it', size = 'normal', busy, className, onSure, children }: { word: string; yes: string; no?: string; size?: ButtonSize; busy: boolean; className?: string; onSure: () => void; children?: ReactNode }) {
   const [asked, setAsked] = useState(false);
   if (!asked)
     return (
-      <Button size={size} disabled={busy} onClick={() => setAsked(true)}>
+      <Button size={size} disabled={busy} className={className} onClick={() => setAsked(true)}>
         {word}
       </Button>
     );
