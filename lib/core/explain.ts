@@ -49,7 +49,7 @@ function recordLines(watch: Watch): string[] {
 
 function curveLines(watch: Watch): string[] {
   const prior = watch.fgPrior();
-  const lines = ['', `Yeast's range and tolerance: final gravity ${fixed(prior.mean, 1)} ± ${fixed(prior.sd, 1)} points; done at ${fixed(watch.zoneTop(), 1)} or less, stuck above ${fixed(watch.stuckFloor(), 1)}`];
+  const lines = ['', `Yeast's range, the must's sugars and the yeast's tolerance: final gravity ${fixed(prior.mean, 1)} ± ${fixed(prior.sd, 1)} points; done at ${fixed(watch.zoneTop(), 1)} or less, stuck above ${fixed(watch.stuckFloor(), 1)}`];
   const fit = watch.fit();
   if (!fit) return [...lines, 'Curve: no fit'];
   const names = namesOf('kinetic');

@@ -7,8 +7,8 @@ import { lookAt } from './run';
 import { addCase, newScore, type Score } from './score';
 import { Truths } from './truths';
 
-/** A seed of its own, and a fifth of the catalogue: enough to see a rule break. `npm run evaluate` has the whole of it. */
-const SEED = 7001;
+/** Seeds of their own, and a fifth of the catalogue for each: enough to see a rule break. `npm run evaluate` has the whole of it. */
+const SEEDS = [7001, 7002, 7003];
 const few = (groups: readonly (readonly [string, number])[]): (readonly [string, number])[] => groups.map(([name, count]) => [name, Math.max(2, Math.round(count / 5))] as const);
 
 let ours: Score;
@@ -18,10 +18,12 @@ let thumb: Summary;
 beforeAll(() => {
   ours = newScore();
   const naive = newScore();
-  for (const batch of catalogue(SEED, few(GROUPS))) {
-    const truths = new Truths(batch);
-    addCase(ours, batch, truths, lookAt(batch, PITCHED));
-    addCase(naive, batch, truths, naiveLooks(batch, PITCHED));
+  for (const seed of SEEDS) {
+    for (const batch of catalogue(seed, few(GROUPS))) {
+      const truths = new Truths(batch);
+      addCase(ours, batch, truths, lookAt(batch, PITCHED));
+      addCase(naive, batch, truths, naiveLooks(batch, PITCHED));
+    }
   }
   summary = summarise(ours);
   thumb = summarise(naive);
@@ -48,7 +50,7 @@ describe('the calls on simulated batches', () => {
   });
 
   it('find the peak, the swap, the end, and the days of racking and bottling', () => {
-    const least = { 'past peak': 0.9, 'airlock ok': 0.88, terminal: 0.86, 'ready to rack': 0.84, 'ready to bottle': 0.8 } as const;
+    const least = { 'past peak': 0.9, 'airlock ok': 0.88, terminal: 0.86, 'ready to rack': 0.84, 'ready to bottle': 0.84 } as const;
     for (const decision of Object.keys(least) as (keyof typeof least)[]) expect(summary.decisions[decision].recall, decision).toBeGreaterThan(least[decision]);
     expect(summary.decisions['ready to rack'].delayMedian).toBeLessThan(20);
     expect(summary.rackDateMae).toBeLessThan(1.3);
@@ -75,7 +77,7 @@ describe('the calls on simulated batches', () => {
 
   it('come through with what people tell wrongly', () => {
     const mistold = newScore();
-    for (const batch of catalogue(SEED, few(MISTOLD_GROUPS))) addCase(mistold, batch, new Truths(batch), lookAt(batch, PITCHED));
+    for (const batch of catalogue(SEEDS[0]!, few(MISTOLD_GROUPS))) addCase(mistold, batch, new Truths(batch), lookAt(batch, PITCHED));
     expect(mistold.unsafeBottleStuck).toEqual([]);
     expect(summarise(mistold).decisions.started.recall).toBeGreaterThan(0.9);
   });

@@ -1,6 +1,6 @@
 import type { Call } from '../types';
 import { VOLUMES_PER_POINT } from '../gas/gas';
-import { BOTTLE_POINTS } from '../stages/watch';
+import { BOTTLE_POINTS } from '../stages/remaining';
 import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, fallingWords, gravityWords, pointsWords, rateWords } from './words';
 
@@ -52,16 +52,12 @@ export function bottleCall(scene: Scene): Call {
     return call('yes', `May be bottled: since ${since === null ? 'now' : when(scene, since)}.`, `${gravityWords(level)} and level; ${worst === null ? '' : `at worst ${worst.toFixed(1)} volumes more in the bottle.`}`, {
       since,
       evidence: figures,
-      act: worst !== null && worst >= 1 ? 'Check the gravity with a hydrometer before you prime.' : 'Prime for the bottles you have, not for more.',
+      act: watch.sweetHeld()
+        ? 'Do not prime it: its sugar waits for any yeast that lives. Keep the bottles cool, and open one after two weeks.'
+        : worst !== null && worst >= 1
+          ? 'Check the gravity with a hydrometer before you prime.'
+          : 'Prime for the bottles you have, not for more.',
       changesIt: 'Changes it: a fall of 0.5 points a day.',
-    });
-  }
-  if (watch.stuck.on) {
-    return call('hold', 'Do not bottle: sugar is left.', `Stopped at ${gravityWords(level)}, ${pointsWords(level - watch.fgPrior().mean)} above the expected end.`, {
-      since: sinceOf(scene, watch.stuck.since),
-      evidence: figures,
-      act: 'See to the stall first.',
-      changesIt,
     });
   }
   if (watch.sweetStill(level)) {
@@ -69,6 +65,14 @@ export function bottleCall(scene: Scene): Call {
       since: sinceOf(scene, watch.lastAddition),
       evidence: figures,
       act: 'Stabilise it and log that, or wait until it has worked out.',
+      changesIt,
+    });
+  }
+  if (watch.stuck.on) {
+    return call('hold', 'Do not bottle: sugar is left.', `Stopped at ${gravityWords(level)}, ${pointsWords(level - watch.fgPrior().mean)} above the expected end.`, {
+      since: sinceOf(scene, watch.stuck.since),
+      evidence: figures,
+      act: 'See to the stall first.',
       changesIt,
     });
   }

@@ -14,17 +14,14 @@ const FACTOR_80 = [0.92, 0.95, 0.95, 0.98, 1.1, 1.6];
 const FACTOR_95 = [1.15, 1.15, 1.15, 1.15, 1.8, 3.0];
 /** Half width of the 80 % interval of ln(time to the end + 12 h). */
 const DATE_80 = [0.87, 0.61, 0.62, 0.62, 0.69, 1.2];
-/**
- * By how much the hours to go are too many, as their logarithm (of the hours and 12) by
- * progress: by the curve, which slows down too long for honey and fruit, and by the
- * tail. About the middle on the tuning seeds and on batches of other equations.
- */
-const LATE: Record<DrinkKind, { curve: readonly number[]; tail: number }> = {
-  beer: { curve: [0.1, 0.1, 0.05, 0, 0, 0], tail: 0 },
-  cider: { curve: [0.1, 0.1, 0.1, 0.1, 0.1, 0.1], tail: 0.25 },
-  mead: { curve: [0.3, 0.3, 0.25, 0.2, 0.2, 0.2], tail: 0.25 },
-  wine: { curve: [0.3, 0.3, 0.25, 0.2, 0.2, 0.2], tail: 0.25 },
-};
+/** How late a curve is whose yeast has alcohol to spare, and at its limit; and a tail of simple sugars (about the middles on the tuning seeds). */
+const LATE = { withRoom: 0.33, from: 0.7, atTolerance: -0.15, tail: 0.25 };
+
+interface Lateness {
+  curve: number;
+  tail: number;
+}
+
 /** Share of the fall from which the tail tells of the date, and the share more at which it alone does (own simulations). */
 const TAIL_SPEAKS_FROM = 0.65;
 const TAIL_TAKES_OVER = 0.28;
@@ -61,10 +58,24 @@ export function hoursInterval(hours: number, done: number): { lo: number; hi: nu
 /** Whether the tail is asked for the date when so much of the fall is done. */
 export const tailTellsDate = (done: number): boolean => done > TAIL_SPEAKS_FROM;
 
-/** The hours still to go by the curve and by the tail, without their leaning to the late side; the further the fall, the more by the tail. */
-export function calibratedHours(byCurve: number, byTail: number | null, done: number, kind: DrinkKind): number {
-  const late = LATE[kind];
-  const curve = Math.log(byCurve + TAME_H) - late.curve[progressBin(done)]!;
+/**
+ * By how much the hours to go are too many, as their logarithm (of the hours and 12), by
+ * the curve and by the tail. For simple sugars both slow down too long; the curve does not
+ * where alcohol near what the yeast bears holds the end back (Levenspiel, Biotechnol. Bioeng. 22
+ * (1980) 1671-1687); `burden` is the alcohol at the end over what the yeast bears.
+ */
+export function lateness(kind: DrinkKind, burden: number | null, done: number): Lateness {
+  if (kind === 'beer') return { curve: 0, tail: 0 };
+  // A cider's own priors already tell how soon it ends.
+  if (burden === null || kind === 'cider') return { curve: 0, tail: LATE.tail };
+  const share = Math.min(1, Math.max(0, (burden - LATE.from) / (1 - LATE.from)));
+  const curve = LATE.withRoom + share * (LATE.atTolerance - LATE.withRoom);
+  return { curve: tailTellsDate(done) ? Math.min(0, curve) : curve, tail: LATE.tail };
+}
+
+/** The hours still to go, without what they are too late by: by the curve, and the further the fall the more by the tail. */
+export function hoursToGo(byCurve: number, byTail: number | null, done: number, late: Lateness = { curve: 0, tail: 0 }): number {
+  const curve = Math.log(byCurve + TAME_H) - late.curve;
   const share = byTail === null ? 0 : Math.min(1, Math.max(0, (done - TAIL_SPEAKS_FROM) / TAIL_TAKES_OVER));
   const tail = byTail === null ? 0 : Math.log(byTail + TAME_H) - late.tail;
   return Math.max(0, Math.exp((1 - share) * curve + share * tail) - TAME_H);

@@ -1,5 +1,6 @@
-import type { BatchSetup, DrinkKind } from '../types';
+import { POINTS_PER_G_PER_L } from '../gravity/extract';
 import { pointsAtTolerance } from '../strength/strength';
+import type { BatchSetup, DrinkKind } from '../types';
 
 /** A normal prior: mean and standard deviation. */
 export interface Normal {
@@ -14,6 +15,29 @@ const USUAL_ATTENUATION: Record<DrinkKind, { min: number; max: number }> = {
   mead: { min: 0.95, max: 1.15 },
   wine: { min: 0.96, max: 1.12 },
 };
+
+/**
+ * Share of its extract that ferments in a must of simple sugars, which any yeast takes
+ * whole: what its card says was measured in wort. Malt needs the card. Juice and sugar
+ * in unknown parts: from nearly all of the one to nearly all of the other.
+ */
+const FERMENTS: Partial<Record<DrinkKind, Normal>> = {
+  // Apple juice 0.85 to 0.90, pear less (sorbitol; common practice), sugar 1.
+  cider: n(0.91, 0.055),
+  // 78.1 g of the 82.8 g of solids in 100 g: J. W. White et al., Composition of American Honeys, USDA Technical Bulletin 1261 (1962), from memory.
+  mead: n(0.943, 0.03),
+  // Grape must 0.884 (OIV-MA-AS2-02, Table II against ICUMSA), sugar 1.
+  wine: n(0.93, 0.045),
+};
+/** g of extract that make 1 g of ethanol (Balling 1843), and g/L of it in 1 % vol. */
+const EXTRACT_PER_ETHANOL = 2.0665;
+const GRAMS_PER_ABV = 7.89;
+/** Share of the sugar that stays as glycerol, acids and the like (Balling's split, from memory). */
+const BY_PRODUCTS = 0.03;
+/** Alcohol, % vol, that a yeast bears where nobody says (common practice: wine yeast 12 to 16). */
+const USUAL_TOLERANCE = 14;
+/** The alcohol of the dry drink over what the yeast bears: up to `ample` it will take all the sugar, from `none` on nobody knows (ours). */
+const SPARE = { ample: 0.8, none: 0.95 };
 
 /** Priors of ln κ, ln m, ln Kr, logit δ of the kinetic curve by kind (our own, pooled over simulated batches of two families of models). */
 const KINETICS: Record<DrinkKind, readonly [Normal, Normal, Normal, Normal]> = {
@@ -54,9 +78,39 @@ export function largerOf(a: Normal, b: Normal): Normal {
 
 const SD_FLOOR = 1.5;
 
+/** Ethanol, g/L, of a must in which such a share of the extract has fermented. */
+const ethanolAtShare = (originalPoints: number, share: number): number => (share * originalPoints) / POINTS_PER_G_PER_L / EXTRACT_PER_ETHANOL;
+
+/** Final gravity, points, of such a must: the sugar gone but for its by-products, and the alcohol that lightens it (fitted to OIML R 22). */
+function pointsAtShare(originalPoints: number, share: number): number {
+  const ethanol = ethanolAtShare(originalPoints, share);
+  return originalPoints - (1 - BY_PRODUCTS) * share * originalPoints - (0.1885 * ethanol - 2.5e-4 * ethanol * ethanol);
+}
+
 /**
- * What the yeast's range and tolerance say of the final gravity, points: the
- * larger of where the attenuation ends and where the alcohol stops the yeast.
+ * Where a must of simple sugars ends by its make-up, points; null for malt, and where the
+ * alcohol may stop the yeast before the sugar is gone: nearing that it counts for less.
+ */
+function bySugars(kind: DrinkKind, originalPoints: number, toleranceAbv: number | null): Normal | null {
+  const share = FERMENTS[kind];
+  if (!share || originalPoints <= 0) return null;
+  const burden = ethanolAtShare(originalPoints, share.mean) / GRAMS_PER_ABV / (toleranceAbv ?? USUAL_TOLERANCE);
+  const weight = Math.min(1, (SPARE.none - burden) / (SPARE.none - SPARE.ample));
+  if (weight <= 0) return null;
+  const fall = pointsAtShare(originalPoints, share.mean - share.sd) - pointsAtShare(originalPoints, share.mean + share.sd);
+  return n(pointsAtShare(originalPoints, share.mean), Math.max(SD_FLOOR, fall / 2) / Math.sqrt(weight));
+}
+
+/** Two independent normals as one, weighted by their variances. */
+function both(a: Normal, b: Normal): Normal {
+  const weight = b.sd ** 2 / (a.sd ** 2 + b.sd ** 2);
+  return n(weight * a.mean + (1 - weight) * b.mean, (a.sd * b.sd) / Math.hypot(a.sd, b.sd));
+}
+
+/**
+ * What the yeast's range, the must's sugars and the yeast's tolerance say of the
+ * final gravity, points: the larger of where the attenuation ends and where the
+ * alcohol stops the yeast.
  */
 export function finalGravityPrior(
   setup: Pick<BatchSetup, 'kind' | 'attenuation' | 'alcoholToleranceAbv'>,
@@ -72,11 +126,12 @@ export function finalGravityPrior(
     mean: effectiveOg * (1 - mid),
     sd: Math.hypot(effectiveOg * attenuationSd, ogSd * (1 - mid)),
   };
-  let prior = byYeast;
+  const sugars = bySugars(setup.kind, effectiveOg, setup.alcoholToleranceAbv);
+  let prior = sugars ? both(byYeast, sugars) : byYeast;
   if (setup.alcoholToleranceAbv !== null) {
     const stop = pointsAtTolerance(effectiveOg, setup.alcoholToleranceAbv);
     const slope = pointsAtTolerance(effectiveOg, setup.alcoholToleranceAbv - 1) - stop;
-    prior = largerOf(byYeast, { mean: stop, sd: Math.hypot(0.8 * slope, ogSd) });
+    prior = largerOf(prior, { mean: stop, sd: Math.hypot(0.8 * slope, ogSd) });
   }
   return { mean: prior.mean, sd: Math.max(SD_FLOOR, prior.sd) + (fruit ? 3 : 0) };
 }

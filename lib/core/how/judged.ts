@@ -1,5 +1,6 @@
 /** Where the figures of a judgement come from: the batch page, the shelf and the rounds ask here. */
 import { GAS_L_PER_L_PER_POINT, VOLUMES_PER_POINT } from '../gas/gas';
+import { BOTTLE_POINTS } from '../stages/remaining';
 import type { CallName } from '../types';
 import { how, type How, type InputTuple } from './how';
 import { ours, published, SOURCES } from './sources';
@@ -50,7 +51,7 @@ export function howOfJudged(figure: JudgedFigure, from: JudgedFrom): How {
         ? how('the last reading by hand, corrected to 20 °C where the sample’s temperature was logged; ± what such a reading is good to', SOURCES.told, [read, now])
         : how('level now of the float’s robust line through the medians of its hours, a version of its calibration applied; ± its noise and its calibration, 8 times in 10', ROBUST, [read, now]);
     case 'bed':
-      return how('where the sugar is expected to end: the yeast’s range and its tolerance at first, the course of the fall the more the further it is; ± 8 times in 10', CURVE, [og, ['yeast', from.yeast, ''], now, bed]);
+      return how('where the sugar is expected to end: the yeast’s range and tolerance and the make-up of the must at first, the course of the fall the more the further it is; ± 8 times in 10', CURVE, [og, ['yeast', from.yeast, ''], now, bed]);
     case 'attenuation':
       return how('(original gravity − gravity now) ÷ (original gravity − 1), all the sugar that went in counted as there from the start; after “of”: the same for the bed', SOURCES.practice, [og, now, bed]);
     case 'strength so far':
@@ -80,7 +81,7 @@ const RULES: Record<CallName, { formula: string; source: Parameters<typeof how>[
   stalled: { formula: 'stopped: under 0.5 points a day for 48 hours, or under 0.35 for 72, well above where the yeast’s range and tolerance let it end. Slow: under 2 points a day with more than 5 days to go', source: SOURCES.ownRule },
   temperature: { formula: 'median of 3 hours against the yeast’s range as told, with 0.4 °C of room', source: SOURCES.told },
   rack: { formula: 'inside the expected end and about 2 points still to come, no more than the limit of the fall, at three looks in a row', source: SOURCES.ownRule },
-  bottle: { formula: `inside the expected end, stable the longer the older it is (3 to 7 days), no sugar added for 5 days, and at most 1 point that may still come, 9 times in 10; each such point makes ${VOLUMES_PER_POINT} volumes in a closed bottle`, source: ours('our own; 1 point gives 1.01 g/L of CO2 by Balling’s split. Two or three equal readings days apart are common practice') },
+  bottle: { formula: `inside the expected end, stable the longer the older it is (3 to 7 days), no sugar added for 5 days, and at most ${BOTTLE_POINTS} points that may still come, 9 times in 10; each such point makes ${VOLUMES_PER_POINT} volumes in a closed bottle`, source: ours('our own; 1 point gives 1.01 g/L of CO2 by Balling’s split. Two or three equal readings days apart are common practice') },
   sensor: { formula: 'silent after 6 hours, or six of its own intervals where that is longer; stuck where its noise falls under 0.3 of what is usual for it; adrift where a hydrometer says 4 points else', source: SOURCES.ownRule },
 };
 

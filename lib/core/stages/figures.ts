@@ -1,12 +1,13 @@
 import type { BatchSetup, Instant, Neck } from '../types';
 import type { CurveFit } from '../fit/map';
-import { calibratedHours, SHAPE_SD, tailTellsDate } from '../fit/intervals';
+import { hoursToGo, lateness, SHAPE_SD, tailTellsDate } from '../fit/intervals';
 import { finalGravityPrior, type Normal } from '../fit/priors';
 import { gasLPerH, swapGasLPerH } from '../gas/gas';
 import type { Line } from '../series/line';
 import type { Tail } from '../series/tail';
 import { Track, type Segment } from '../series/track';
-import { pointsOf } from '../units/convert';
+import { abvBalling } from '../strength/strength';
+import { pointsOf, sgOf } from '../units/convert';
 import { fitSegment } from './curve';
 import { latch } from './latch';
 import { held, mixed, remaining, shareOfTail, type Remaining } from './remaining';
@@ -236,12 +237,19 @@ export class Figures {
     return { at: now, tail: this.track.tail(Math.max(96, Math.min(mostH, share * own)), restarted ? from + 24 : 0, now, age) };
   }
 
+  /** The alcohol at a level as a share of what the yeast bears; null where that is not told. */
+  private burden(level: number | null): number | null {
+    const tolerance = this.setup.alcoholToleranceAbv;
+    if (tolerance === null || level === null || this.segment.effectiveOg <= 0) return null;
+    return abvBalling(sgOf(this.segment.effectiveOg), sgOf(level)) / tolerance;
+  }
+
   /** The tail where the fall is near its end; null before, when it takes a steady fall for the whole of it. */
   private tailNow(): Tail | null {
     const level = this.levelNow();
     const line = this.line(48);
     if (level === null || line === null || !this.peaked.on || -line.slope > 3 || level > this.zoneTop() + 10) return null;
-    if (-line.slope > 1 || level > this.zoneTop()) {
+    if (!this.sweetHeld() && (-line.slope > 1 || level > this.zoneTop())) {
       const fit = this.fit();
       if (fit && fit.curve.og - level < NEAR_END * (fit.curve.og - fit.curve.fg)) return null;
     }
@@ -316,7 +324,7 @@ export class Figures {
     if (drop <= points) return 0;
     const tauNow = this.track.tauAt(this.lookedAt) - this.track.tauAt(this.segment.from);
     const byCurve = ((curve.tauOfShare(points / drop) - tauNow) / this.track.warmthAt(this.lookedAt)) * 24;
-    return calibratedHours(Math.max(0, byCurve), byTail, done, this.setup.kind);
+    return hoursToGo(Math.max(0, byCurve), byTail, done, lateness(this.setup.kind, this.burden(this.expectedFg()), done));
   }
 
   /** Share of the whole expected fall that is done, 0 to 1. */
@@ -353,6 +361,11 @@ export class Figures {
   /** Whether sugar that went in after the batch had come to rest is still there, and nothing keeps the yeast from it. */
   sweetStill(level: number): boolean {
     return this.sweetened && !this.stabilised && this.restedAt !== null && level > this.restedAt + 2;
+  }
+
+  /** Sweetened at rest and kept from working by what went in to stabilise it: what lies there stays. */
+  sweetHeld(): boolean {
+    return this.sweetened && this.stabilised && this.restedAt !== null;
   }
 
   quietSinceAddition(hours: number, fruitHours: number): boolean {

@@ -53,8 +53,8 @@ export class Peak extends Intake {
     const passed = this.pastCurvePeak();
     // Where the record is plain the curve is not asked: a late start can put its turn too late.
     const seen = plain || (passed === null ? below : passed > CURVE_PAST_DAYS || (below && passed > LINE_PAST_DAYS));
-    // A drift or the first small fall has no peak.
-    hold(this.peaked, hour, seen && this.progress() >= 0.12, 2, false);
+    // A drift or the first small fall has no peak; what was stabilised at rest has had its own.
+    hold(this.peaked, hour, (seen && this.progress() >= 0.12) || this.sweetHeld(), 2, false);
   }
 
   /** Thermal days since the steepest place of the fitted curve; null without a curve, or where it says that hardly anything has fallen. */

@@ -1,3 +1,6 @@
+/** Points that may still come, nine times in ten, when a batch may be bottled. */
+export const BOTTLE_POINTS = 1.2;
+
 /** Points still to fall, how well that is known, and the most it may be nine times in ten. */
 export interface Remaining {
   value: number;

@@ -2,18 +2,18 @@ import type { BatchSetup, Reading } from '../types';
 import { VOLUMES_PER_POINT } from '../gas/gas';
 import type { Line } from '../series/line';
 import { CURVE_PAST_DAYS, Peak } from './peak';
-import { hold } from './latch';
+import { clear, hold } from './latch';
+import { BOTTLE_POINTS } from './remaining';
 
 export { LOOK_H } from './intake';
 
-/** Points that may still come, nine times in ten, when a batch may be racked, when it is called finished, and when it may be bottled. */
-export const RACK_POINTS = 4.8;
-export const TERMINAL_POINTS = 1.9;
-export const BOTTLE_POINTS = 1.2;
+/** Points that may still come, nine times in ten, when a batch may be racked and when it is called finished. */
+const RACK_POINTS = 4.4;
+const TERMINAL_POINTS = 1.9;
 /** Points left by the curve alone, at half its pace, when a batch may be racked whose float gives nothing (ours). */
 const RACK_BLIND_POINTS = 2.5;
 /** Fall, points a day, under which it may be racked. */
-export const RACK_PACE = 3;
+export const RACK_PACE = 2.5;
 /** Hours after the pitch at which a start is overdue. */
 export const OVERDUE_H: Record<BatchSetup['kind'], number> = { beer: 48, cider: 72, mead: 72, wine: 72 };
 
@@ -123,9 +123,9 @@ export class Watch extends Peak {
     const lower48 = line48 ? -line48.slope - 1.64 * line48.se : null;
     const upper48 = line48 ? -line48.slope + 1.28 * line48.se : null;
     const ground = this.groundLevel();
-    const inside = ground !== null && ground <= this.zoneTop() && this.peaked.on;
+    const inside = ground !== null && (ground <= this.zoneTop() || this.sweetHeld()) && this.peaked.on;
     // A level that would not be called stuck may be the end: the yeast's range is often a little wrong.
-    const near = ground !== null && ground <= this.stuckFloor() && this.peaked.on;
+    const near = ground !== null && (ground <= this.stuckFloor() || this.sweetHeld()) && this.peaked.on;
     // The tail is only asked where the fall is slow enough for it to matter.
     const ceiling = this.bottle.on ? Number.POSITIVE_INFINITY : this.terminal.on ? BOTTLE_PACE : TERMINAL_PACE;
     const slow = (inside || (near && !this.coldNow())) && upper48 !== null && upper48 < ceiling;
@@ -193,6 +193,11 @@ export class Watch extends Peak {
   }
 
   private judgeStall(hour: number): void {
+    if (this.sweetHeld()) {
+      clear(this.stuck);
+      clear(this.sluggish);
+      return;
+    }
     const level = this.groundLevel();
     if (level === null) return;
     const prior = this.fgPrior();

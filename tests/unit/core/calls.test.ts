@@ -70,7 +70,7 @@ describe('the calls', () => {
   });
 
   it('let it be racked by what the float gave before it fell silent, once little is left even at half the pace, and ask for a reading first', () => {
-    const { rack, bottle } = at(8, record(4, cider)).calls;
+    const { rack, bottle } = at(9, record(4, cider)).calls;
     expect(rack).toMatchObject({ verdict: 'yes', reason: 'By what the sensor gave before it fell silent.' });
     expect(rack.act).toMatch(/^Read by hand first/);
     expect(bottle.verdict).toBe('unknown');
@@ -135,8 +135,8 @@ describe('the calls', () => {
   });
 
   it('take a level a little above the range for the end after days of rest, but ask for a hydrometer before the bottle', () => {
-    // With its doubt, done is 4.3 or less here, and stuck 5.8 or more.
-    const high = (day: number): number => modelGravity('kinetic', [55, 5, -1, 0.2, -1.2, -1], day);
+    // With its doubt, done is 2.8 or less here, and stuck 4.5 or more.
+    const high = (day: number): number => modelGravity('kinetic', [55, 3.7, -1, 0.2, -1.2, -1], day);
     const { calls, stage } = at(30, record(30, high, () => 19, 0.3));
     expect(stage).toBe('terminal');
     expect(calls.rack.verdict).toBe('yes');
@@ -172,13 +172,21 @@ describe('the calls', () => {
     const readings = record(44, sweet);
     expect(at(44, readings, { events }).calls.bottle).toMatchObject({ verdict: 'hold', headline: 'Do not bottle: the sugar that went in is still there.' });
     const held: BatchEvent[] = [...events, { at: PITCH + 29 * DAY, kind: 'stabilise' }];
-    expect(at(44, readings, { events: held }).calls.bottle.verdict).toBe('yes');
+    const stabilised = at(44, readings, { events: held }).calls;
+    expect(stabilised.bottle.verdict).toBe('yes');
+    expect(stabilised.bottle.act).toMatch(/^Do not prime it/);
+    expect(stabilised.stalled.verdict).not.toBe('yes');
+    // Far above where it ended, too: what lies there has been told of.
+    const sweeter: BatchEvent[] = [held[1]!, { at: PITCH + 30 * DAY, kind: 'addition', sugarG: 140 }];
+    const much = at(44, record(44, (day) => (day < 30 ? cider(day) : cider(day) + 12)), { events: sweeter }).calls;
+    expect(much.bottle.verdict).toBe('yes');
+    expect(much.stalled.verdict).not.toBe('yes');
   });
 
   it('do not bottle what only the cold has stopped, though it lies within its range', () => {
-    const stopped = (day: number): number => Math.max(3, cider(day));
+    const stopped = (day: number): number => Math.max(1.5, cider(day));
     let stop = 0;
-    while (cider(stop) > 3) stop += 0.25;
+    while (cider(stop) > 1.5) stop += 0.25;
     expect(at(stop + 7, record(stop + 7, stopped)).calls.bottle.verdict).toBe('yes');
     expect(at(stop + 7, record(stop + 7, stopped, (day) => (day < stop - 0.5 ? 19 : 9))).calls.bottle.verdict).not.toBe('yes');
   });

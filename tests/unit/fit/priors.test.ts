@@ -31,6 +31,24 @@ describe('the prior of the final gravity', () => {
     expect(prior.mean).toBeCloseTo(12, 0);
   });
 
+  it('holds the card of a yeast against the sugars of the must, which malt alone leaves to the card', () => {
+    const low = { attenuation: { min: 0.9, max: 1 }, alcoholToleranceAbv: 18 };
+    // Dry by composition: 94.3 % of honey's extract ferments, 0.5 g of alcohol from a gram (White et al. 1962; Balling).
+    const mead = finalGravityPrior({ kind: 'mead', ...low }, 90, 1, false);
+    expect(mead.mean).toBeLessThan(90 * 0.05 - 3);
+    expect(mead.mean).toBeGreaterThan(-12);
+    const card = 90 * (0.05 / 1.28);
+    expect(mead.sd).toBeLessThan(card);
+    // An apple juice without a card ends near 0.998, as dry ciders do (common practice).
+    const cider = finalGravityPrior({ kind: 'cider', attenuation: null, alcoholToleranceAbv: null }, 50, 1, false);
+    expect(Math.abs(cider.mean + 2)).toBeLessThan(2);
+    const beer = finalGravityPrior({ kind: 'beer', ...low }, 50, 1, false);
+    expect(beer.mean).toBeCloseTo(2.5, 1);
+    // A must whose alcohol would near what the yeast bears is left to the card.
+    const strong = finalGravityPrior({ kind: 'mead', attenuation: { min: 0.6, max: 0.7 }, alcoholToleranceAbv: null }, 110, 1, false);
+    expect(strong.mean).toBeCloseTo(110 * 0.35, 5);
+  });
+
   it('stops a strong mead at what its yeast bears', () => {
     const prior = finalGravityPrior({ kind: 'mead', attenuation: { min: 1, max: 1.1 }, alcoholToleranceAbv: 12 }, 130, 1, false);
     expect(prior.mean).toBeGreaterThan(30);
