@@ -145,7 +145,7 @@ describe('every screen', () => {
     await page.getByRole('button', { name: /^how\? figures of/ }).first().click();
     const row = page.getByRole('dialog');
     const inRow = (figure: string) => row.locator('div', { has: page.locator('dt', { hasText: figure }) }).last().locator('dd').first().textContent();
-    const [strength, cost] = [await inRow('strength'), await inRow('cost a litre')];
+    const strength = await inRow('strength');
     expect(strength).toContain('sugar for fizz');
     await page.goto(`${web.url}/book/${there.lotId}`);
     const onLot = async (figure: string) => {
@@ -153,7 +153,7 @@ describe('every screen', () => {
       await how.locator('summary').click();
       return how.locator('div').first().textContent();
     };
-    expect([await onLot('strength'), await onLot('cost a litre')]).toEqual([strength, cost]);
+    expect(await onLot('strength')).toBe(strength);
     await context.close();
   }, 120_000);
 });
