@@ -8,7 +8,7 @@ import { Haze } from '@/components/ui/Haze';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { EmptyState, ErrorState, FormError } from '@/components/ui/Notice';
 import { useNow } from '@/components/ui/now';
-import { GroupBar } from '@/components/ui/Page';
+import { GroupBar, PageHead } from '@/components/ui/Page';
 import { resolveAlert, useAlerts } from '@/lib/client/alerts';
 import { ClientError } from '@/lib/client/fetcher';
 import { useMe } from '@/lib/client/me';
@@ -62,16 +62,22 @@ export function AlertsPage() {
 
   if (me && !mayRead) {
     return (
-      <EmptyState title="Alerts are for those who tend the vessels" action={<LinkButton href="/shelf">To the shelf</LinkButton>}>
-        As a guest of {me.cellar.name} you see its batches and bottles.
-      </EmptyState>
+      <>
+        <PageHead title="Alerts" />
+        <EmptyState title="Alerts are for those who tend the vessels" action={<LinkButton href="/shelf">To the shelf</LinkButton>}>
+          As a guest of {me.cellar.name} you see its batches and bottles.
+        </EmptyState>
+      </>
     );
   }
   if ((error && !open.alerts) || (meError && !me)) {
     return (
-      <ErrorState title="The alerts did not load" onRetry={() => [open.retry, acknowledged.retry, resolved.retry, retryMe].forEach((retry) => retry())}>
-        {(error ?? meError)?.message} Mails still go out.
-      </ErrorState>
+      <>
+        <PageHead title="Alerts" />
+        <ErrorState title="The alerts did not load" onRetry={() => [open.retry, acknowledged.retry, resolved.retry, retryMe].forEach((retry) => retry())}>
+          {(error ?? meError)?.message} Mails still go out.
+        </ErrorState>
+      </>
     );
   }
   if (!open.alerts || !acknowledged.alerts || !resolved.alerts || nowMs === null || !me) return <Haze height={420} label="Loading the alerts" className="m-(--margin)" />;

@@ -23,9 +23,12 @@ export function BenchList() {
   const { batches, error, retry } = useBatches();
   if (error && !batches) {
     return (
-      <ErrorState title="The batches did not load" onRetry={retry}>
-        {error.message}
-      </ErrorState>
+      <>
+        <PageHead title="Bottling bench" />
+        <ErrorState title="The batches did not load" onRetry={retry}>
+          {error.message}
+        </ErrorState>
+      </>
     );
   }
   if (!batches) return <Haze height={320} label="Loading the batches" className="m-(--margin)" />;

@@ -89,42 +89,50 @@ export function BookPage() {
   const query: LotSearch = { state, sort, order: SORTS[sort].order, limit: 200, ...(q ? { q } : {}), ...(kind ? { kind } : {}), ...(place ? { place } : {}) };
   const { lots, nextCursor, error, retry } = useLots(query);
   const asked = q !== '' || kind !== '' || place !== '' || state !== 'all';
+  // In a book without a line there is nothing to look for. Once looked for, the way back stays.
+  const [looked, setLooked] = useState(false);
+  if ((asked || words !== '') && !looked) setLooked(true);
+  const bare = lots?.length === 0 && !looked;
   return (
     <>
       <PageHead title="Cellar book" meta={lots && `${lots.length}${nextCursor ? ' or more' : ''} ${lots.length === 1 ? 'lot' : 'lots'}, ${lots.reduce((sum, lot) => sum + lot.counts.left, 0)} bottles left`}>
-        <a href={lotsCsvUrl(query)} download className={buttonClass('plain', 'normal')}>
-          Take it as CSV
-        </a>
+        {!bare && (
+          <a href={lotsCsvUrl(query)} download className={buttonClass('plain', 'normal')}>
+            Take it as CSV
+          </a>
+        )}
       </PageHead>
-      <div className="flex flex-wrap items-end gap-x-4 gap-y-3 border-b bg-desk px-(--margin) py-3">
-        <Field label="look for" type="search" value={words} onChange={(event) => setWords(event.target.value)} className="w-56 max-strip:w-full" />
-        <Select label="kind" value={kind} onChange={(event) => setKind(event.target.value as DrinkKind | '')} className="w-44 max-strip:w-[calc(50%-0.5rem)]">
-          <option value="">every kind</option>
-          {DRINK_KINDS.map((one) => (
-            <option key={one} value={one}>
-              {KIND_WORDS[one]}
-            </option>
-          ))}
-        </Select>
-        {(places ?? []).length > 0 && (
-          <Select label="place" value={place} onChange={(event) => setPlace(event.target.value)} className="w-44 max-strip:w-[calc(50%-0.5rem)]">
-            <option value="">every place</option>
-            {(places ?? []).map((one) => (
-              <option key={one.id} value={one.id}>
-                {one.name}
+      {!bare && (
+        <div className="flex flex-wrap items-end gap-x-4 gap-y-3 border-b bg-desk px-(--margin) py-3">
+          <Field label="look for" type="search" value={words} onChange={(event) => setWords(event.target.value)} className="w-56 max-strip:w-full" />
+          <Select label="kind" value={kind} onChange={(event) => setKind(event.target.value as DrinkKind | '')} className="w-44 max-strip:w-[calc(50%-0.5rem)]">
+            <option value="">every kind</option>
+            {DRINK_KINDS.map((one) => (
+              <option key={one} value={one}>
+                {KIND_WORDS[one]}
               </option>
             ))}
           </Select>
-        )}
-        <Select label="order" value={sort} onChange={(event) => setSort(event.target.value as Sort)} className="w-40 max-strip:w-[calc(50%-0.5rem)]">
-          {(Object.keys(SORTS) as Sort[]).map((one) => (
-            <option key={one} value={one}>
-              {SORTS[one].name}
-            </option>
-          ))}
-        </Select>
-        <FilterTabs label="Show" value={state} onChoose={setState} tabs={TABS} />
-      </div>
+          {(places ?? []).length > 0 && (
+            <Select label="place" value={place} onChange={(event) => setPlace(event.target.value)} className="w-44 max-strip:w-[calc(50%-0.5rem)]">
+              <option value="">every place</option>
+              {(places ?? []).map((one) => (
+                <option key={one.id} value={one.id}>
+                  {one.name}
+                </option>
+              ))}
+            </Select>
+          )}
+          <Select label="order" value={sort} onChange={(event) => setSort(event.target.value as Sort)} className="w-40 max-strip:w-[calc(50%-0.5rem)]">
+            {(Object.keys(SORTS) as Sort[]).map((one) => (
+              <option key={one} value={one}>
+                {SORTS[one].name}
+              </option>
+            ))}
+          </Select>
+          <FilterTabs label="Show" value={state} onChoose={setState} tabs={TABS} />
+        </div>
+      )}
       {error && !lots ? (
         <ErrorState title="The cellar book did not load" onRetry={retry}>
           {error.message}

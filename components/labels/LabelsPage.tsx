@@ -32,25 +32,34 @@ export function LabelsPage() {
   const router = useRouter();
   if (error && !lots) {
     return (
-      <ErrorState title="The lots did not load" onRetry={retry}>
-        {error.message}
-      </ErrorState>
+      <>
+        <PageHead title="Labels" />
+        <ErrorState title="The lots did not load" onRetry={retry}>
+          {error.message}
+        </ErrorState>
+      </>
     );
   }
   if (!lots || !me) return <Haze height={420} label="Loading the labels" className="m-(--margin)" />;
   if (!may('labels.print')) {
     return (
-      <EmptyState title="Labels are for brewers" action={<LinkButton href="/book">To the cellar book</LinkButton>}>
-        Ask a keeper of {me.cellar.name} for the role of a brewer.
-      </EmptyState>
+      <>
+        <PageHead title="Labels" />
+        <EmptyState title="Labels are for brewers" action={<LinkButton href="/book">To the cellar book</LinkButton>}>
+          Ask a keeper of {me.cellar.name} for the role of a brewer.
+        </EmptyState>
+      </>
     );
   }
   const lot = lots.find((one) => one.id === asked) ?? lots[0];
   if (!lot) {
     return (
-      <EmptyState title="No lot to label" action={<LinkButton href="/bench">To the bench</LinkButton>}>
-        A lot has labels from the day it is bottled.
-      </EmptyState>
+      <>
+        <PageHead title="Labels" />
+        <EmptyState title="No lot to label" action={<LinkButton href="/bench">To the bench</LinkButton>}>
+          A lot has labels from the day it is bottled.
+        </EmptyState>
+      </>
     );
   }
   return <Labels key={lot.id} lot={lot} lots={lots} onLot={(id) => router.replace(`/labels?lot=${id}`, { scroll: false })} />;

@@ -27,7 +27,14 @@ export function Rounds() {
   const { me, may } = useMe();
   const clockMs = useNow();
   if (!me || clockMs === null) return <Haze height={300} className="m-(--margin)" label="Loading the rounds" />;
-  if (!may('jobs.read')) return <EmptyState title="The rounds are for those who work here">Ask a keeper of {me.cellar.name} for the role of a hand.</EmptyState>;
+  if (!may('jobs.read')) {
+    return (
+      <>
+        <PageHead title="Rounds" />
+        <EmptyState title="The rounds are for those who work here">Ask a keeper of {me.cellar.name} for the role of a hand.</EmptyState>
+      </>
+    );
+  }
   return <Walk now={clockMs / 1000} timeZone={me.cellar.time_zone} me={me.person.id} mayDo={may('jobs.do')} />;
 }
 
