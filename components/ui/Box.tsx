@@ -27,7 +27,7 @@ interface BoxProps {
 export function Box({ ticked, onTick, notYet = false, disabled = false, label, children, className = '' }: BoxProps) {
   const id = useId();
   return (
-    <label htmlFor={id} className={`relative inline-flex items-start gap-3 max-strip:min-h-11 max-strip:min-w-11 ${className}`}>
+    <label htmlFor={id} className={`relative inline-flex max-w-full items-start gap-3 max-strip:min-h-11 max-strip:min-w-11 ${className}`}>
       <input
         id={id}
         type="checkbox"

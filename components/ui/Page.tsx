@@ -4,8 +4,8 @@ import type { ReactNode } from 'react';
 export function PageHead({ title, meta, children, size = 'head' }: { title: ReactNode; meta?: ReactNode; children?: ReactNode; size?: 'head' | 'title' }) {
   return (
     <div className="flex flex-wrap items-center gap-x-5 gap-y-2 border-b-[1.5px] border-ink px-(--margin) py-3">
-      <h1 className={size === 'title' ? 'type-title' : 'type-head'}>{title}</h1>
-      {meta && <div className="type-label text-ink2">{meta}</div>}
+      <h1 className={`min-w-0 break-words ${size === 'title' ? 'type-title' : 'type-head'}`}>{title}</h1>
+      {meta && <div className="type-label min-w-0 break-words text-ink2">{meta}</div>}
       {children && <div className="ml-auto flex flex-wrap items-center gap-2">{children}</div>}
     </div>
   );
