@@ -3,8 +3,9 @@ import { POINTS_PER_G_PER_L } from '../gravity/extract';
 import { median } from '../series/order';
 import { findStep, findSugar, stepAt } from '../series/steps';
 import { pointsOf } from '../units/convert';
-import { Figures, HAND_SD } from './figures';
+import { HAND_SD } from './figures';
 import { clear } from './latch';
+import { Outlook } from './outlook';
 
 /** Hours between two looks. The grid is anchored at the pitch, so that shifting all times shifts all answers. */
 export const LOOK_H = 3;
@@ -12,7 +13,7 @@ export const LOOK_H = 3;
 const FRUIT_SUGAR = 0.1;
 
 /** Takes in readings and events, and keeps the record straight: additions, hydrometer readings, steps, a frozen float. */
-export class Intake extends Figures {
+export class Intake extends Outlook {
   /** Highest rate over each window that the peak is sought in. */
   protected readonly maxRates = new Map<number, { rate: number; se: number }>();
   private noiseHistory: number[] = [];
