@@ -8,6 +8,7 @@ import { connect } from '@/db/client';
 import { migrate } from '@/db/migrate';
 import { Assignment, Batch, Cellar, Sensor } from '@/db/models';
 import { hashSensorSecret } from '@/lib/auth/sensors';
+import { env } from '@/lib/config/env';
 import { freePort, startCluster } from '../lib/postgres';
 import type { Outcome, Plan } from './publisher';
 
@@ -104,7 +105,7 @@ async function plainInsert(url: string, from: number): Promise<number> {
 }
 
 async function main(): Promise<void> {
-  const given = process.env.DATABASE_URL;
+  const given = env().DATABASE_URL;
   const folder = given ? null : await mkdtemp(join(tmpdir(), 'fallbright-bench-'));
   const cluster = folder ? await startCluster(join(folder, 'postgres'), await freePort()) : null;
   const url = given ?? cluster!.url;
