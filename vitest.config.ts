@@ -3,8 +3,8 @@ import { defineConfig } from 'vitest/config';
 
 const alias = { '@': fileURLToPath(new URL('.', import.meta.url)).replace(/\/$/, '') };
 
-/** Suites that share the machine's two cores with a database, a broker or a browser run one file at a time. */
-const project = (name: string, options: { timeout: number; parallel: boolean; needsDatabase: boolean }) => ({
+/** How many files run at a time. Those with a database, a broker or a browser wait for those as much as they work, and keep two cores busy in twos; a fault is told from load only by itself. */
+const project = (name: string, turn: number, options: { timeout: number; atATime?: number; needsDatabase: boolean }) => ({
   resolve: { alias },
   test: {
     name,
@@ -12,7 +12,9 @@ const project = (name: string, options: { timeout: number; parallel: boolean; ne
     include: [`tests/${name}/**/*.test.{ts,tsx}`],
     testTimeout: options.timeout,
     hookTimeout: Math.max(options.timeout, 120_000),
-    fileParallelism: options.parallel,
+    maxWorkers: options.atATime,
+    // One suite after the other, where several are asked for in one run.
+    sequence: { groupOrder: turn },
     globalSetup: options.needsDatabase ? ['tests/support/global-postgres.ts'] : [],
   },
 });
@@ -20,12 +22,12 @@ const project = (name: string, options: { timeout: number; parallel: boolean; ne
 export default defineConfig({
   test: {
     projects: [
-      project('unit', { timeout: 60_000, parallel: true, needsDatabase: false }),
-      project('reference', { timeout: 60_000, parallel: true, needsDatabase: false }),
-      project('evaluation', { timeout: 300_000, parallel: true, needsDatabase: false }),
-      project('integration', { timeout: 120_000, parallel: false, needsDatabase: true }),
-      project('fault', { timeout: 300_000, parallel: false, needsDatabase: true }),
-      project('browser', { timeout: 240_000, parallel: false, needsDatabase: true }),
+      project('unit', 0, { timeout: 60_000, needsDatabase: false }),
+      project('reference', 1, { timeout: 60_000, needsDatabase: false }),
+      project('evaluation', 2, { timeout: 300_000, needsDatabase: false }),
+      project('integration', 3, { timeout: 120_000, atATime: 2, needsDatabase: true }),
+      project('fault', 4, { timeout: 300_000, atATime: 1, needsDatabase: true }),
+      project('browser', 5, { timeout: 240_000, atATime: 2, needsDatabase: true }),
     ],
   },
 });

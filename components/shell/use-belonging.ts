@@ -8,11 +8,22 @@ import { noteLeft } from './left-cellar';
 /** A page of one thing of a cellar: a batch, a sensor, a lot. */
 const isOfOneThing = (path: string) => !path.startsWith('/settings') && path.split('/').length > 2;
 
+/** Whoever is writing in a sheet writes to the end first: what they keep waits on the device until they have signed in again. */
+function onceNothingIsWritten(leave: () => void): () => void {
+  const open = document.querySelector('dialog[open]');
+  if (!open) {
+    leave();
+    return () => undefined;
+  }
+  open.addEventListener('close', leave, { once: true });
+  return () => open.removeEventListener('close', leave);
+}
+
 /**
  * Leaves the pages of a cellar when the person no longer belongs there: signed
- * out from afar, to the sign-in page; in no cellar any more, to the page that
- * makes one; in another, to its shelf. And follows a change of cellar, made
- * here or in another tab.
+ * out from afar, to the sign-in page, once an open sheet is closed; in no
+ * cellar any more, to the page that makes one; in another, to its shelf. And
+ * follows a change of cellar, made here or in another tab.
  */
 export function useBelonging(): void {
   const { me, error } = useMe();
@@ -24,7 +35,7 @@ export function useBelonging(): void {
   useEffect(() => {
     // The whole page goes, and with it whatever it still held of the cellar.
     /* eslint-disable @next/next/no-location-assign-relative-destination -- a router would keep the page's memory */
-    if (status === 401) window.location.assign(`/sign-in?said=ended&next=${encodeURIComponent(window.location.pathname)}`);
+    if (status === 401) return onceNothingIsWritten(() => window.location.assign(`/sign-in?said=ended&next=${encodeURIComponent(window.location.pathname)}`));
     if (status === 403) {
       if (shown.current) noteLeft(shown.current.person, shown.current.name);
       window.location.assign('/welcome');

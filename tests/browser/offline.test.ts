@@ -57,13 +57,22 @@ async function onTheBatch(page: Page): Promise<void> {
   await page.getByRole('heading', { level: 1, name: batch.name }).filter({ visible: true }).first().waitFor();
 }
 
-async function write(page: Page, text: string): Promise<void> {
+async function begin(page: Page, text: string): Promise<void> {
   await page.getByRole('button', { name: 'Write in the log' }).first().click();
   const form = page.getByRole('dialog');
   await form.getByLabel('What happened').selectOption('note');
   await form.getByRole('textbox', { name: /note/i }).first().fill(text);
+}
+
+async function keep(page: Page): Promise<void> {
+  const form = page.getByRole('dialog');
   await form.locator('button[type=submit]').click();
   await form.waitFor({ state: 'hidden' });
+}
+
+async function write(page: Page, text: string): Promise<void> {
+  await begin(page, text);
+  await keep(page);
 }
 
 const waiting = (page: Page) => page.getByRole('list', { name: 'Waiting to be sent' }).getByRole('listitem');
@@ -244,8 +253,12 @@ describe('a sign-in that has ended', () => {
     const made = await visit();
     const { page, context } = made;
     await onTheBatch(page);
+    await begin(page, 'Written after the sign-in had ended.');
+    const told = page.waitForResponse((response) => new URL(response.url()).pathname === '/api/v1/me' && response.status() === 401);
     await SignIn.update({ endedAt: new Date() }, { where: { personId: wren.personId } });
-    await write(page, 'Written after the sign-in had ended.');
+    await told;
+    await keep(page);
+    await page.waitForURL(/sign-in\?said=ended/);
     // By the bar, or by the sign-in page where the page has gone there by then.
     await page.getByText(/note waits on this device/).waitFor({ timeout: 60_000 });
     expect(await logged()).toEqual([]);
