@@ -36,7 +36,7 @@ export function AlertRow({ alert, now, timeZone, chosen, mayTake, mayClear, onCh
             <Sentence strong>{alert.evidence.headline}</Sentence>
           </button>
         </h3>
-        <p className={`type-label text-ink2 ${alert.gone ? '' : 'truncate'}`} title={alertMeta(alert, now, timeZone)}>
+        <p className={`type-label text-ink2 ${alert.gone ? '' : 'strip:truncate'}`} title={alertMeta(alert, now, timeZone)}>
           {alertMeta(alert, now, timeZone)}
         </p>
       </div>

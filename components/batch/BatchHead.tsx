@@ -31,7 +31,8 @@ function Facts({ batch, facts, phone }: { batch: BatchBody; facts: readonly Fact
       {ordered.map((fact, index) => (
         <div key={fact.name} className={phone ? `border-rule py-2 ${index > 3 ? 'border-t' : ''} ${index % 4 === 0 ? 'pl-(--margin)' : 'border-l pl-2'}` : `flex-auto py-2 pr-3 ${index === 0 ? '' : index % 4 === 0 ? 'wide:border-l wide:pl-3' : 'border-l pl-3'}`}>
           <dt className="type-label truncate text-[0.71875rem] text-ink2">{names[fact.name] ?? fact.name}</dt>
-          <dd className="whitespace-nowrap font-mono text-[0.96875rem] font-semibold leading-5">
+          {/* Words are longer than figures and would touch their neighbour. */}
+          <dd className={`font-mono font-semibold leading-5 ${phone && !/\d/.test(fact.figure) ? 'text-[0.8125rem]' : 'whitespace-nowrap text-[0.96875rem]'}`}>
             {fact.figure}
             {fact.more && !phone && <span className="type-label pl-1.5 text-ink2">{fact.more}</span>}
           </dd>
@@ -105,7 +106,7 @@ export function PhoneHead({ batch, meta, onSetup }: { batch: BatchBody; meta: re
       <Link href="/shelf" className="type-label -ml-2 inline-flex min-h-11 items-center gap-1 px-2 text-ink2 no-underline">
         <BackIcon size={11} /> Shelf
       </Link>
-      <p className="type-sub two-lines min-w-0 flex-1 break-words leading-[1.3125rem]!" role="heading" aria-level={1}>
+      <p className="type-sub two-lines mb-0! min-w-0 flex-1 break-words pb-0! leading-6!" role="heading" aria-level={1}>
         {batch.name}
       </p>
       <div className="type-label shrink-0 text-right text-ink2 max-[359px]:hidden" style={{ lineHeight: '1rem' }}>

@@ -8,6 +8,12 @@ import { sizeWords } from './words';
 
 const range = ({ lo, hi }: { lo: number; hi: number }) => (hi - lo < 0.05 ? hi.toFixed(1) : `${lo.toFixed(1)}–${hi.toFixed(1)}`);
 
+/** What stands beside the bottle, in its order. */
+const COLUMNS = { count: 'count', volumes: 'volumes', cellar: 'cellar', warm: 'warmest', worst: 'at worst', holds: 'holds' } as const;
+
+/** A figure's name, where there is no head over it. */
+const Name = ({ children }: { children: string }) => <span className="text-ink2 strip:hidden">{children} </span>;
+
 /** Every bottle of the plan: how many, the gas and the pressure in it, and what it holds. */
 export function BottleTable({ verdict, request }: { verdict: BenchVerdict; request: BenchRequest }) {
   const { plan, bottles, residual, remaining } = verdict;
@@ -42,38 +48,44 @@ export function BottleTable({ verdict, request }: { verdict: BenchVerdict; reque
       </div>
       {bottles.length > 0 && (
         <div className="relative overflow-x-auto" tabIndex={0} role="region" aria-label="Every bottle">
-          <table className="type-label w-full min-w-[640px] border-t text-left">
-            <thead>
+          <table className="type-label w-full border-t text-left max-strip:block strip:min-w-[640px]">
+            {/* A phone has a line for each figure: none may stand where only a finger finds it. */}
+            <thead className="max-strip:hidden">
               <tr className="bg-desk text-ink2 [&>th]:px-2 [&>th]:py-1 [&>th]:font-medium [&>th:first-child]:pl-(--margin)">
                 <th scope="col">bottle</th>
-                <th scope="col">count</th>
-                <th scope="col">volumes</th>
-                <th scope="col">cellar</th>
-                <th scope="col">warmest</th>
-                <th scope="col">at worst</th>
-                <th scope="col">holds</th>
+                {Object.values(COLUMNS).map((name) => (
+                  <th key={name} scope="col">
+                    {name}
+                  </th>
+                ))}
               </tr>
             </thead>
-            <tbody>
+            <tbody className="max-strip:block">
               {bottles.map((bottle) => {
                 const limit = limitOf(bottle);
                 const over = bottle.worst.bar > limit;
                 return (
-                  <tr key={bottle.key} className="border-t border-rule [&>*]:px-2 [&>*]:py-1.5 [&>*:first-child]:pl-(--margin)">
-                    <th scope="row" className="font-medium">
+                  <tr key={bottle.key} className="border-t border-rule max-strip:grid max-strip:grid-cols-2 max-strip:gap-x-4 max-strip:px-(--margin) max-strip:py-2 strip:[&>*]:px-2 strip:[&>*]:py-1.5 strip:[&>*:first-child]:pl-(--margin)">
+                    <th scope="row" className="font-medium max-strip:col-span-2 max-strip:pb-1">
                       {BOTTLES[bottle.choice.kind].name}, {sizeWords(bottle.choice.sizeMl)}
                       <span className="block text-ink2">{CLOSURE_CATALOGUE[bottle.choice.closure].name}</span>
                     </th>
-                    <td>{bottle.count}</td>
                     <td>
+                      <Name>{COLUMNS.count}</Name>
+                      {bottle.count}
+                    </td>
+                    <td>
+                      <Name>{COLUMNS.volumes}</Name>
                       {range(bottle.volumes.value)} <How of="Gas as asked" how={bottle.volumes.how} />
                     </td>
                     {(['cellar', 'warm', 'worst'] as const).map((at) => (
                       <td key={at} className={at === 'worst' && over ? 'font-semibold text-madder' : ''}>
+                        <Name>{COLUMNS[at]}</Name>
                         {bottle[at].bar.toFixed(1)} bar{at === 'worst' && over ? ', over' : ''} <How of={`Pressure ${at === 'cellar' ? 'in the cellar' : at === 'warm' ? 'at the warmest' : 'at worst'}`} how={bottle[at].how} />
                       </td>
                     ))}
                     <td>
+                      <Name>{COLUMNS.holds}</Name>
                       {bottle.holds.rating === 'never' ? 'still only' : `${limit.toFixed(1)} bar${bottle.holds.confirmed ? '' : ', usual'}`}{' '}
                       <How of="What it holds" how={howOfHolds(bottle.choice)} />
                     </td>

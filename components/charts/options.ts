@@ -30,6 +30,9 @@ export interface ChartHandlers {
 
 const HIDDEN = { show: false };
 
+/** A figure of gas stands at the middle of its hours, so its bar stands around it. */
+export const GAS_BARS = { size: [0.72, 100, 1], align: 0 } satisfies uPlot.Series.BarsPathBuilderOpts;
+
 /** Options of one chart, for the batch page or for a lane of the shelf. */
 export function chartOptions(scene: () => Scene, size: { width: number; height: number }, handlers: ChartHandlers = {}): uPlot.Options {
   const page = scene().layout.style !== 'lane';
@@ -81,7 +84,7 @@ export function chartOptions(scene: () => Scene, size: { width: number; height: 
   series[SERIES.gas] = {
     scale: 'gas',
     show: page,
-    paths: uPlot.paths.bars?.({ size: [0.72, 100, 1], align: 1 }),
+    paths: uPlot.paths.bars?.(GAS_BARS),
     fill: () => thin(scene().palette.ink, 0.72),
     fillTo: () => 0,
     points: HIDDEN,

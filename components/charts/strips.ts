@@ -51,6 +51,9 @@ export function roundSteps(min: number, max: number, count: number): number[] {
 }
 
 const POINT = 0.001;
+
+/** Between the middles of two figures of an axis, px: less, and one is written onto the other. */
+const FIGURES_APART = 13;
 const known = (values: readonly (number | null | undefined)[]): number[] => values.filter((value): value is number => typeof value === 'number' && Number.isFinite(value));
 
 /**
@@ -122,7 +125,7 @@ function pageLayout(picture: Picture, style: 'page' | 'phone'): Layout {
     rules,
     ticks: {
       // A round value too near the bed's own figure gives way to it.
-      gravity: roundSteps(gravity.min, gravity.max, phone ? 6 : 7).filter((value) => bed === null || Math.abs(value - bed) / (gravity.max - gravity.min) > 0.05),
+      gravity: roundSteps(gravity.min, gravity.max, phone ? 6 : 7).filter((value) => bed === null || (Math.abs(value - bed) / (gravity.max - gravity.min)) * gravity.height >= FIGURES_APART),
       temperature: picture.range ? [picture.range.min, picture.range.max] : warmth ? roundSteps(warmth.min, warmth.max, 2) : [],
       gas: gas ? roundSteps(0, gas.max, phone ? 2 : 4) : [],
     },

@@ -4,7 +4,7 @@ import { useState } from 'react';
 import { dayName } from '@/components/charts/zone';
 import { useAct } from '@/components/ui/use-act';
 import { Button } from '@/components/ui/Button';
-import { FormError } from '@/components/ui/Notice';
+import { ErrorState, FormError } from '@/components/ui/Notice';
 import { GroupBar } from '@/components/ui/Page';
 import { undoImport, useImports } from '@/lib/client/imports';
 import { useMe } from '@/lib/client/me';
@@ -13,10 +13,19 @@ import { countWords } from './words';
 /** What was brought in, each to be taken out again in one step. */
 export function Imports() {
   const { me } = useMe();
-  const { imports } = useImports();
+  const { imports, error, retry } = useImports();
   const { busy, failed, act } = useAct('It was not taken out. Try again.');
   const [sure, setSure] = useState<string | null>(null);
   const day = (at: string) => dayName(Date.parse(at) / 1000, me?.cellar.time_zone ?? 'UTC');
+  if (error && !imports)
+    return (
+      <section aria-label="Brought in">
+        <GroupBar word="Brought in" />
+        <ErrorState title="What was brought in did not load" onRetry={retry}>
+          {error.message}
+        </ErrorState>
+      </section>
+    );
   if (!imports || imports.length === 0) return null;
   return (
     <section aria-label="Brought in">

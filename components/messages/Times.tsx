@@ -30,14 +30,16 @@ function Quiet({ messages }: { messages: MessagesBody }) {
           <span className="min-w-0 flex-1 basis-64">
             <Sentence>{quiet ? `From ${clockOf(quiet.from)} to ${clockOf(quiet.to)} messages wait and come as one after. What can hurt someone comes all the same.` : 'None: messages come at any hour.'}</Sentence>
           </span>
-          <Button disabled={busy} onClick={begin}>
-            {quiet ? 'Change' : 'Keep some'}
-          </Button>
-          {quiet && (
-            <Button look="quiet" disabled={busy} onClick={() => void run(() => saveMessages({ quiet: null }))}>
-              None
+          <span className="flex gap-2">
+            <Button disabled={busy} onClick={begin}>
+              {quiet ? 'Change' : 'Keep some'}
             </Button>
-          )}
+            {quiet && (
+              <Button look="quiet" disabled={busy} onClick={() => void run(() => saveMessages({ quiet: null }))}>
+                None
+              </Button>
+            )}
+          </span>
         </div>
       ) : (
         <div className="flex flex-wrap items-start gap-3">
@@ -74,14 +76,16 @@ function Digest({ messages }: { messages: MessagesBody }) {
           <span className="min-w-0 flex-1 basis-64">
             <Sentence>{at === null ? 'None. It would hold the day’s rounds and how every vessel stands.' : `At ${clockOf(at)}: the day’s rounds and how every vessel stands, of every cellar you tend.`}</Sentence>
           </span>
-          <Button disabled={busy} onClick={() => setDraft(at === null ? USUAL.digest : clockOf(at))}>
-            {at === null ? 'Send me one' : 'Change'}
-          </Button>
-          {at !== null && (
-            <Button look="quiet" disabled={busy} onClick={() => void run(() => saveMessages({ digest_at: null }))}>
-              None
+          <span className="flex gap-2">
+            <Button disabled={busy} onClick={() => setDraft(at === null ? USUAL.digest : clockOf(at))}>
+              {at === null ? 'Send me one' : 'Change'}
             </Button>
-          )}
+            {at !== null && (
+              <Button look="quiet" disabled={busy} onClick={() => void run(() => saveMessages({ digest_at: null }))}>
+                None
+              </Button>
+            )}
+          </span>
         </div>
       ) : (
         <div className="flex flex-wrap items-start gap-3">

@@ -60,7 +60,7 @@ export function LimitsPage() {
   const { data, loading, error, retry } = useSensorLimits();
   return (
     <section aria-label="When to be told">
-      <GroupBar word="The list of sensors and a sensor’s page say so when" />
+      <GroupBar word="Say so when" note="on the list of sensors and on the sensor’s page" />
       {loading && <Haze height={80} label="Loading the limits" className="mx-(--margin) my-3" />}
       {error && !data && (
         <ErrorState title="The limits did not load" onRetry={retry}>

@@ -60,10 +60,10 @@ function NewToken({ own, onMade }: { own: Role; onMade: (token: CreatedToken) =>
     <form aria-label="Make a token" noValidate onSubmit={submit} className="flex flex-col gap-3 border-b bg-desk px-(--margin) py-4">
       <div className="flex flex-wrap items-start gap-3">
         <Field label="what it is for" maxLength={60} value={name} error={fields.name} className="flex-1 basis-56 strip:max-w-80" onChange={(event) => setName(event.target.value)} />
-        <Select label="may do what a … may" value={role} className="w-44 max-strip:w-full" onChange={(event) => setRole(event.target.value as Role)}>
+        <Select label="may do as much as" value={role} className="w-44 max-strip:w-full" onChange={(event) => setRole(event.target.value as Role)}>
           {roles.map((item) => (
             <option key={item} value={item}>
-              {item}
+              a {item}
             </option>
           ))}
         </Select>

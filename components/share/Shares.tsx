@@ -9,6 +9,7 @@ import { FormError } from '@/components/ui/Notice';
 import { GroupBar } from '@/components/ui/Page';
 import { ClientError } from '@/lib/client/fetcher';
 import { createShare, revokeShare, useShares } from '@/lib/client/tastings';
+import { lookedWords } from './words';
 
 /** The share links of a batch: made, copied, revoked. Whoever has the address can look. */
 export function Shares({ batchId, day }: { batchId: string; day: (at: string) => string }) {
@@ -44,7 +45,7 @@ export function Shares({ batchId, day }: { batchId: string; day: (at: string) =>
             )}
             <div className="type-label flex flex-wrap items-center gap-x-4 text-ink2">
               <span>
-                until {day(share.expires_at)}, looked at {share.looked_at} {share.looked_at === 1 ? 'time' : 'times'}
+                until {day(share.expires_at)}, {lookedWords(share.looked_at)}
               </span>
               {share.open && share.url && (
                 <>

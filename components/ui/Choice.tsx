@@ -21,7 +21,7 @@ export function Choice<T extends string>({ label, bare = false, value, onChoose,
         {options.map((option) => (
           <label
             key={option.value}
-            className={`type-label relative flex min-h-11 flex-1 items-center justify-center px-3 text-center strip:min-h-[33px] ${option.value === value ? 'bg-ink text-on' : 'bg-lit text-ink hover:bg-desk'}`}
+            className={`type-label relative flex min-h-11 flex-1 items-center justify-center px-3 text-center [overflow-wrap:normal] strip:min-h-[33px] ${option.value === value ? 'bg-ink text-on' : 'bg-lit text-ink hover:bg-desk'}`}
             style={{ fontWeight: option.value === value ? 600 : 500 }}
           >
             <input type="radio" className="absolute inset-0 appearance-none" name={label} value={option.value} checked={option.value === value} onChange={() => onChoose(option.value)} />

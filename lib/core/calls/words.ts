@@ -47,15 +47,18 @@ function formatsOf(timeZone: string): { clock: Intl.DateTimeFormat; day: Intl.Da
   return made;
 }
 
+/** Three letters a month, as on every screen: the locale writes `Sept`. */
+const shortDay = (day: Intl.DateTimeFormat, at: Instant): string => day.format(at).replace(',', '').replace('Sept', 'Sep');
+
 /** `Thu 14:00` within six days of `now`, else `Wed 15 Oct`. */
 export function whenWords(at: Instant, now: Instant, timeZone: string): string {
   const { clock, day } = formatsOf(timeZone);
   if (Math.abs(at - now) < 6 * 86_400_000) return clock.format(at).replace(',', '');
-  return day.format(at).replace(',', '');
+  return shortDay(day, at);
 }
 
 /** `Wed 15 Oct`. */
-export const dayWords = (at: Instant, timeZone: string): string => formatsOf(timeZone).day.format(at).replace(',', '');
+export const dayWords = (at: Instant, timeZone: string): string => shortDay(formatsOf(timeZone).day, at);
 
 export function evidence(name: string, value: number, threshold: number | null, unit: string): Evidence {
   return { name, value, threshold, unit };

@@ -122,6 +122,14 @@ describe('the strips', () => {
     expect(temperature).toBeNull();
   });
 
+  it('write no figure onto the bed’s: 1.020 gives way to a bed of 1.017 on a phone', () => {
+    const { gravity, ticks } = layOut(picture({ originalGravity: 1.068, bed: { value: 1.017, lo: 1.015, hi: 1.019 } }), 'phone');
+    const y = (value: number) => ((gravity.max - value) / (gravity.max - gravity.min)) * gravity.height;
+    expect(ticks.gravity).not.toContain(1.02);
+    expect(ticks.gravity.length).toBeGreaterThan(2);
+    for (const value of ticks.gravity) expect(Math.abs(y(value) - y(1.017))).toBeGreaterThanOrEqual(13);
+  });
+
   it('leave out the round value that the bed’s own figure would cover', () => {
     expect(layOut(picture({ bed: { value: 1.0105, lo: 1.009, hi: 1.012 }, curve: straight() }), 'page').ticks.gravity).not.toContain(1.01);
   });
