@@ -43,7 +43,8 @@ export class ForbiddenError extends AppError {
 export class NotFoundError extends AppError {
   readonly code = 'not-found';
   constructor(what = 'page') {
-    super(`There is no such ${what} here.`);
+    // `link, or it has been used`: the reason ends the sentence, not the place.
+    super(`There is no such ${what.includes(',') ? what : `${what} here`}.`);
   }
 }
 

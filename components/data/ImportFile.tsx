@@ -116,7 +116,7 @@ export function ImportFile() {
               </Select>
             )}
             <Button look="first" disabled={busy || looked.preview.good === 0 || (kind === 'readings' && batch === '')} onClick={() => void keep()}>
-              Keep {looked.preview.good} {kind === 'readings' ? 'readings' : 'batches'}
+              Keep {countWords({ [kind === 'readings' ? 'readings' : 'batches']: looked.preview.good })}
             </Button>
             <Button onClick={() => setLooked(null)}>Leave it</Button>
           </div>

@@ -82,7 +82,7 @@ export function InvitationPage({ signedInAs }: { signedInAs: string | null }) {
       <div>
         <h1 className="type-head break-words">Share {view.cellar}</h1>
         <p className="type-body mt-1 break-words">
-          {view.by} asks you to be {view.role} there. {ROLE_MAY[view.role]}
+          {view.by} asks you to be a {view.role} there. {ROLE_MAY[view.role]}
         </p>
         <p className="type-label mt-1 text-ink2">open until {dayName(Date.parse(view.expires_at) / 1000, 'UTC')}</p>
       </div>

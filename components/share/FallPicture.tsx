@@ -4,6 +4,7 @@ import { useRef } from 'react';
 import { dayName } from '@/components/charts/zone';
 import { useWidth } from '@/components/ui/width';
 import type { SharedBatch } from '@/lib/contracts/shares';
+import { fallOf } from './fall';
 
 const HEIGHT = 220;
 const [TOP, FOOT] = [22, 26];
@@ -12,15 +13,7 @@ const [TOP, FOOT] = [22, 26];
 export function FallPicture({ shared, now }: { shared: SharedBatch; now: number }) {
   const frame = useRef<HTMLDivElement>(null);
   const width = Math.max(220, useWidth(frame, 720));
-  const read = shared.entries.flatMap((entry) => (entry.gravity === null ? [] : [{ at: Date.parse(entry.at) / 1000, gravity: entry.gravity }]));
-  // The curve goes on into the forecast; what has not happened is not shown to guests.
-  const until = (shared.ended_at ? Date.parse(shared.ended_at) : now) / 1000;
-  const fitted = shared.curve.filter((point) => Date.parse(point.at) / 1000 <= until).map((point) => ({ at: Date.parse(point.at) / 1000, gravity: point.gravity }));
-  const measured = shared.series.at.flatMap((at, index) => {
-    const gravity = shared.series.gravity[index];
-    return gravity == null ? [] : [{ at, gravity }];
-  });
-  const line = (fitted.length > 1 ? fitted : measured.length > 1 ? measured : read).toSorted((a, b) => a.at - b.at);
+  const { line, read } = fallOf(shared, now);
   const [first, last] = [line[0], line.at(-1)];
   if (!first || !last || last.at <= first.at) return null;
   const gravities = line.map((point) => point.gravity);

@@ -67,7 +67,7 @@ function Shared({ shared, token, now }: { shared: SharedBatch; token: string; no
     <div className="drink" style={{ '--drink': drinkHex(shared.drink_colour) } as CSSProperties}>
       <div className="px-(--margin) pb-2 pt-4">
         <h1 className="type-title break-words">{shared.name}</h1>
-        <p className="type-label text-ink2">
+        <p className="type-label mt-1 text-ink2">
           {shared.called}
           {shared.by && `, by ${shared.by}`}
         </p>

@@ -39,8 +39,9 @@ export function NewPassphrase() {
         {shown ? 'Hide it' : 'Show it'}
       </Button>
       {failed && !fields.passphrase && <FormError>{failed}</FormError>}
+      {failed && !fields.passphrase && <LinkButton href="/sign-in/forgot">Have another mailed</LinkButton>}
       <Button type="submit" look="first" size="tall" disabled={busy || !secret || passphrase === ''}>
-        Take it
+        Set it
       </Button>
     </form>
   );

@@ -8,6 +8,7 @@ import { Button } from '@/components/ui/Button';
 import { Haze } from '@/components/ui/Haze';
 import { How } from '@/components/ui/How';
 import { GroupBar } from '@/components/ui/Page';
+import { useMe } from '@/lib/client/me';
 import { createTasting, removeTasting, useTastings } from '@/lib/client/tastings';
 import { HOW_TASTED } from '@/lib/core/how/lots';
 import { TastingSheet } from './TastingSheet';
@@ -15,6 +16,7 @@ import { ASPECTS, FOUND_WORDS, spreadWords, type Found } from './words';
 
 /** What people found in a lot: the average with its spread, and each note. */
 export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; timeZone: string; now: number; mayTaste: boolean }) {
+  const { me } = useMe();
   const { tastings, summary, error, retry } = useTastings(lotId);
   const [open, setOpen] = useState(false);
   return (
@@ -75,7 +77,7 @@ export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; ti
                 </p>
                 {tasting.words && <p className="type-body break-words">{tasting.words}</p>}
                 {tasting.next_time && <p className="type-reason break-words text-ink2">Next time: {tasting.next_time}</p>}
-                <Photos place={{ lot: lotId }} on={{ tasting: tasting.id }} own={tasting.mine} />
+                <Photos place={{ lot: lotId }} on={{ tasting: tasting.id }} own={tasting.by.id !== null && tasting.by.id === me?.person.id} />
               </li>
             ))}
           </ul>

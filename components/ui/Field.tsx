@@ -13,7 +13,8 @@ interface Around {
   className?: string;
 }
 
-const EDGE = 'w-full rounded bg-lit text-ink outline-offset-2 border-[1.5px]';
+/** Under 16 px a phone zooms into the field that is touched, and the page jumps. */
+const EDGE = 'w-full rounded bg-lit text-ink outline-offset-2 border-[1.5px] max-strip:text-[1rem]!';
 const edge = (error: string | undefined, held: boolean) => `${EDGE} ${error ? 'border-2 border-madder' : held ? 'border-dashed border-ink3 bg-transparent text-ink2' : 'border-ink2'}`;
 
 /** What the description of a control points at. */

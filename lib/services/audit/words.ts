@@ -1,4 +1,5 @@
 import type { TrailRow } from '@/db/queries/trail';
+import { FININGS } from '@/lib/core/additions/fining';
 
 const text = (value: unknown): string => (typeof value === 'string' ? value : typeof value === 'number' ? String(value) : '');
 
@@ -64,7 +65,7 @@ const SAYS: Record<string, Says> = {
   'job.created': (d) => `put on the rounds: ${text(d.title)}`,
   'job.taken': (d) => `took in hand: ${text(d.title)}`,
   'job.left': (d) => `left to others: ${text(d.title)}`,
-  'fining.started': (d) => `fined with ${text(d.fining)}`,
+  'fining.started': (d) => `fined with ${FININGS.find(({ key }) => key === d.fining)?.name ?? text(d.fining)}`,
   'fining.second': () => 'gave the second dose of a fining',
   'must.created': (d) => `wrote the must sheet ${text(d.name)}`,
   'must.updated': () => 'changed a must sheet',
@@ -76,6 +77,8 @@ const SAYS: Record<string, Says> = {
   'lot.caution-lifted': (d) => `took the caution off the lot ${text(d.code)}`,
   'lot.opened': (d) => `opened ${text(d.count)} of a lot`,
   'lot.given': (d) => `gave away ${text(d.count)} of a lot`,
+  'lot.broken': (d) => `broke ${text(d.count)} of a lot`,
+  'lot.gushed': (d) => `had ${text(d.count)} of a lot gush`,
   'tasting.written': () => 'wrote a tasting note',
   'tasting.removed': () => 'took a tasting note back',
   'sensor.set': (d, sensor) => `told the sensor ${sensor ?? ''} to speak every ${Math.round(Number(d.interval_s) / 60)} min`,
