@@ -134,7 +134,7 @@ async function fromApi(event, key) {
   }
 }
 
-const AWAY = `<!doctype html><html lang="en"><meta charset="utf-8"><meta name="viewport" content="width=device-width"><title>Fallbright cannot be reached</title><style>body{margin:0;background:#F1F5ED;color:#14201A;font:17px/25px Georgia,serif}main{max-width:34rem;padding:44px 16px}a{color:inherit}@media(prefers-color-scheme:dark){body{background:#121511;color:#CECAB1}}</style><main><h1>Fallbright cannot be reached</h1><p>There is no network, and this page was not kept on this device. Nothing that was logged is lost.</p><p><a href="/shelf">To the shelf</a></p></main></html>`;
+const AWAY = `<!doctype html><html lang="en"><meta charset="utf-8"><meta name="viewport" content="width=device-width"><title>Fallbright cannot be reached</title><style>body{margin:0;background:#F1F5ED;color:#14201A;font:17px/25px Georgia,serif}main{max-width:34rem;padding:44px 16px}h1{font-size:26px;line-height:29px}a{color:inherit;display:inline-block;padding:10px 0}@media(prefers-color-scheme:dark){body{background:#121511;color:#CECAB1}}</style><main><h1>Fallbright cannot be reached</h1><p>There is no network, and this page was not kept on this device. Nothing that was logged is lost.</p><p><a href="/shelf">To the shelf</a></p></main></html>`;
 
 /** @param {any} event @param {URL} url */
 async function fromPages(event, url) {

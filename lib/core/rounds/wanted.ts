@@ -39,6 +39,8 @@ export interface RoundsInput {
   stage: Stage;
   calls: Readonly<Record<CallName, Pick<Call, 'verdict' | 'kind' | 'since' | 'expectedAt' | 'headline' | 'reason' | 'act'>>>;
   pitchedAt: Instant | null;
+  /** When it came out of other batches, by splitting or blending. */
+  parted: Instant | null;
   /** Last reading of the sensor that was taken. */
   floatAt: Instant | null;
   /** Last reading by hand, or the last time somebody ticked that job. */
@@ -89,10 +91,11 @@ function fromCalls(input: RoundsInput): Wanted[] {
 }
 
 function readingDue(input: RoundsInput): Wanted[] {
-  const { pitchedAt, floatAt, readAt, at, stage, name } = input;
+  const { pitchedAt, parted, floatAt, readAt, at, stage, name } = input;
   if (pitchedAt === null || (floatAt !== null && at - floatAt < FLOAT_COUNTS_MS)) return [];
   const last = Math.max(pitchedAt, readAt ?? 0, floatAt ?? 0);
-  const dueAt = last + READ_EVERY_DAYS[stage === 'terminal' ? 'terminal' : 'working'] * DAY;
+  // What was split off or blended keeps its pitch of old, and is read anew within a day of it.
+  const dueAt = parted !== null && parted > last ? parted + DAY : last + READ_EVERY_DAYS[stage === 'terminal' ? 'terminal' : 'working'] * DAY;
   if (at < dueAt - AHEAD_MS) return [];
   return [{ kind: 'reading', source: 'schedule', title: `Read ${name} by hand`, note: 'No sensor tells how it goes.', dueAt, exact: false }];
 }

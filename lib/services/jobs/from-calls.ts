@@ -1,5 +1,5 @@
 import { Op, type Transaction } from 'sequelize';
-import { Alert, FiningRun, Job, type Batch, type Entry } from '@/db/models';
+import { Alert, BatchLink, FiningRun, Job, type Batch, type Entry } from '@/db/models';
 import { finingState } from '@/lib/core/additions/fining';
 import { CALL_OF_KIND, wantedJobs, type Wanted } from '@/lib/core/rounds/wanted';
 import type { Assessment, Instant } from '@/lib/core/types';
@@ -36,6 +36,7 @@ export async function jobsFromCalls(batch: Batch, assessment: Assessment | null,
           stage: assessment.stage,
           calls: assessment.calls,
           pitchedAt: batch.pitchedAt?.getTime() ?? null,
+          parted: lastAt([await BatchLink.max<Date | null, BatchLink>('at', { where: { toBatch: batch.id, kind: { [Op.in]: ['split', 'blend'] } }, transaction })]),
           floatAt: assessment.lastReadingAt,
           readAt: lastAt([...entries.filter((entry) => entry.kind === 'reading').map((entry) => entry.at), await ticked('reading')]),
           airlockAt: lastAt([...entries.filter((entry) => entry.neck === 'airlock').map((entry) => entry.at), await ticked('airlock')]),

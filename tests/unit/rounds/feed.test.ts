@@ -8,7 +8,7 @@ const AT = Date.UTC(2031, 4, 6, 18);
 /** A mead of 1.100 that needs 250 mg/L and has 50; a tenth of its sugar gone at 1.090. */
 const mead = (over: Partial<FeedInput> = {}): FeedInput => ({ stage: 'peak', fedAt: null, at: AT, volumeL: 4.5, neededMgL: 250, givenMgL: 50, givenG: 0, originalGravity: 1.1, gravity: 1.088, expectedFinal: 1.0, abvPercent: 1.5, ...over });
 const quiet: Call = { verdict: 'no', kind: null, since: null, expectedAt: null, headline: '', reason: '', act: null, changesIt: null, evidence: [] };
-const rounds = (over: Partial<RoundsInput>): RoundsInput => ({ name: 'Mead', neck: 'blow_off', stage: 'peak', pitchedAt: AT - 40 * HOUR, floatAt: AT, readAt: null, airlockAt: null, feed: null, clearing: false, at: AT, calls: Object.fromEntries(CALL_NAMES.map((name) => [name, quiet])) as Record<CallName, Call>, ...over });
+const rounds = (over: Partial<RoundsInput>): RoundsInput => ({ name: 'Mead', neck: 'blow_off', stage: 'peak', pitchedAt: AT - 40 * HOUR, parted: null, floatAt: AT, readAt: null, airlockAt: null, feed: null, clearing: false, at: AT, calls: Object.fromEntries(CALL_NAMES.map((name) => [name, quiet])) as Record<CallName, Call>, ...over });
 
 describe('a feed', () => {
   it('is due by the sugar used, in the portion of the plan, and tells why', () => {

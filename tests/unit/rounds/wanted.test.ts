@@ -8,7 +8,7 @@ const AT = Date.UTC(2026, 2, 4, 12);
 const quiet: Call = { verdict: 'no', kind: null, since: null, expectedAt: null, headline: '', reason: '', act: null, changesIt: null, evidence: [] };
 
 const input = (calls: Partial<Record<CallName, Partial<Call>>> = {}, over: Partial<RoundsInput> = {}): RoundsInput => ({
-  name: 'Perry', neck: 'blow_off', stage: 'slowing', pitchedAt: AT - 5 * DAY, floatAt: AT, readAt: null, airlockAt: null, feed: null, clearing: false, at: AT,
+  name: 'Perry', neck: 'blow_off', stage: 'slowing', pitchedAt: AT - 5 * DAY, parted: null, floatAt: AT, readAt: null, airlockAt: null, feed: null, clearing: false, at: AT,
   calls: Object.fromEntries(CALL_NAMES.map((name) => [name, { ...quiet, ...calls[name] }])) as Record<CallName, Call>,
   ...over,
 });
@@ -31,6 +31,14 @@ describe('the jobs a batch wants', () => {
     expect(titles({ temperature: { verdict: 'yes', kind: 'low' } })).toEqual(['Warm Perry']);
     expect(titles({ temperature: { verdict: 'yes', kind: 'high' } })).toEqual(['Cool Perry']);
     expect(titles({ temperature: { verdict: 'yes', kind: 'high' } }, { stage: 'terminal' })).toEqual([]);
+  });
+
+  it('have what was split off or blended read within a day of it, not late since a pitch of old', () => {
+    const old = { pitchedAt: AT - 40 * DAY, floatAt: null, stage: 'terminal' as const };
+    expect(wantedJobs(input({}, { ...old, parted: AT - HOUR }))).toMatchObject([{ kind: 'reading', dueAt: AT + 23 * HOUR }]);
+    // Once it was read it is a batch like any other.
+    expect(wantedJobs(input({}, { ...old, parted: AT - 9 * DAY, readAt: AT - 8 * DAY }))).toMatchObject([{ kind: 'reading', dueAt: AT - DAY }]);
+    expect(titles({}, { ...old, parted: AT - 2 * DAY, readAt: AT - DAY })).toEqual([]);
   });
 
   it('never say to bottle what works again', () => {
