@@ -51,7 +51,7 @@ export function BenchList() {
                 <Vessel vessel={vesselOf(batch)} height={64} silentPicture />
                 <span className="grid min-w-0 flex-1 gap-x-6 strip:grid-cols-[15rem_minmax(0,1fr)] strip:items-center">
                   <span className="min-w-0">
-                    <span className="type-name block truncate">{batch.name}</span>
+                    <span className="type-name block break-words">{batch.name}</span>
                     <span className="type-label text-ink2">
                       {batch.tag !== null && `tag ${batch.tag}, `}
                       {litres(batch.volume_l)}

@@ -91,7 +91,7 @@ function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
         <div className="flex items-center gap-4 pt-1">
           <Vessel vessel={drawn(facts)} height={64} silentPicture />
           <div className="min-w-0">
-            <p className="type-sub truncate">
+            <p className="type-sub break-words">
               <Link href={`/batches/${batch.id}`} className="no-underline hover:underline">
                 {batch.name}
               </Link>

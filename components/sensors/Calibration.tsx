@@ -120,7 +120,8 @@ export function Calibration({ sensor, mayChange, now, timeZone }: { sensor: Sens
   return (
     <section aria-label="Calibration">
       <GroupBar word="Calibration" note={[inForce ?? 'none in force', ...(calibration.turning ? ['readings are being turned'] : []), ...(calibration.waiting > 0 ? [`${calibration.waiting} ${calibration.waiting === 1 ? 'reading waits' : 'readings wait'}`] : [])].join(' · ')} />
-      {calibration.suggestion && <Suggested sensor={sensor.id} suggestion={calibration.suggestion} mayChange={mayChange} timeZone={timeZone} />}
+      {/* While readings are turned it still speaks of them as they were: agreed to again, it would move them twice. */}
+      {calibration.suggestion && !calibration.turning && <Suggested sensor={sensor.id} suggestion={calibration.suggestion} mayChange={mayChange} timeZone={timeZone} />}
       {leans ? (
         <Bench sensor={sensor} calibration={calibration} mayChange={mayChange} timeZone={timeZone} now={now} />
       ) : (

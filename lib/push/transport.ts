@@ -83,7 +83,11 @@ function post(url: URL, headers: Record<string, string | number>, body: Buffer |
       resolve(response.statusCode ?? 0);
       response.destroy();
     });
-    request.on('error', (error) => reject(new MailFailure(error instanceof PrivateAddressError ? 'refused' : 'unavailable', error.message, { cause: error })));
+    request.on('error', (error) => {
+      const refused = error instanceof PrivateAddressError;
+      // People read it beside their device; what the network said is in the cause.
+      reject(new MailFailure(refused ? 'refused' : 'unavailable', refused ? error.message : 'the push service did not answer', { cause: error }));
+    });
     request.end(body ?? undefined);
   });
 }
