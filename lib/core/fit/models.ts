@@ -1,3 +1,4 @@
+import { CLOSED } from './closed';
 import { KINETIC_PARAMETERS, KineticCurve, KineticRow } from './kinetic';
 import { leastSquares, type FitOptions, type LeastSquaresFit, type Problem, type StopReason } from './leastsquares';
 
@@ -18,116 +19,6 @@ import { leastSquares, type FitOptions, type LeastSquaresFit, type Problem, type
 export const MODEL_NAMES = ['logistic', 'logistic5', 'gompertz', 'richards', 'kinetic'] as const;
 export type ModelName = (typeof MODEL_NAMES)[number];
 
-interface Model {
-  parameters: readonly string[];
-  lower: readonly number[];
-  upper: readonly number[];
-  /** Gravity at t; derivatives by parameter j go to out[i + j·m] where `out` is given. */
-  value(p: ArrayLike<number>, t: number, out: Float64Array | null, i: number, m: number): number;
-}
-
-const logistic: Model = {
-  parameters: ['OG', 'FG', 'k', 'm'],
-  lower: [-50, -150, 1e-4, -60],
-  upper: [250, 200, 60, 400],
-  value(p, t, out, i, m) {
-    const og = p[0]!;
-    const fg = p[1]!;
-    const x = t - p[3]!;
-    const s = 1 / (1 + Math.exp(p[2]! * x));
-    if (out) {
-      const bend = (og - fg) * s * (1 - s);
-      out[i] = s;
-      out[i + m] = 1 - s;
-      out[i + 2 * m] = -bend * x;
-      out[i + 3 * m] = bend * p[2]!;
-    }
-    return fg + (og - fg) * s;
-  },
-};
-
-const logistic5: Model = {
-  parameters: ['OG', 'FG', 'k', 'm', 's'],
-  lower: [-50, -150, 1e-4, -60, 0.02],
-  upper: [250, 200, 60, 400, 50],
-  value(p, t, out, i, m) {
-    const og = p[0]!;
-    const fg = p[1]!;
-    const x = t - p[3]!;
-    const z = p[2]! * x;
-    // ln of the bracket, safe for large z.
-    const l = z > 30 ? z : Math.log1p(Math.exp(z));
-    const s = Math.exp(-p[4]! * l);
-    if (out) {
-      const drop = og - fg;
-      const share = 1 / (1 + Math.exp(-z));
-      const bend = drop * s * p[4]! * share;
-      out[i] = s;
-      out[i + m] = 1 - s;
-      out[i + 2 * m] = -bend * x;
-      out[i + 3 * m] = bend * p[2]!;
-      out[i + 4 * m] = -drop * s * l;
-    }
-    return fg + (og - fg) * s;
-  },
-};
-
-const gompertz: Model = {
-  parameters: ['OG', 'FG', 'pace', 'lag'],
-  lower: [-50, -150, 1e-3, -60],
-  upper: [250, 200, 400, 400],
-  value(p, t, out, i, m) {
-    const og = p[0]!;
-    const drop = og - p[1]!;
-    const e = Math.E / drop;
-    const x = p[3]! - t;
-    const inner = Math.exp(Math.min(50, p[2]! * e * x + 1));
-    const y = Math.exp(-inner);
-    if (out) {
-      const byInner = -drop * y * inner;
-      const byDrop = y + byInner * ((-p[2]! * e * x) / drop);
-      out[i] = 1 - byDrop;
-      out[i + m] = byDrop;
-      out[i + 2 * m] = -byInner * e * x;
-      out[i + 3 * m] = -byInner * p[2]! * e;
-    }
-    return og - drop * y;
-  },
-};
-
-const richards: Model = {
-  parameters: ['OG', 'FG', 'pace', 'lag', 'shape'],
-  lower: [-50, -150, 1e-3, -60, 1e-3],
-  upper: [250, 200, 400, 400, 20],
-  value(p, t, out, i, m) {
-    const og = p[0]!;
-    const drop = og - p[1]!;
-    const nu = p[4]!;
-    const x = p[3]! - t;
-    // (1 + ν)^(1 + 1/ν), by its logarithm.
-    const power = Math.log1p(nu) * (1 + 1 / nu);
-    const c = Math.exp(power);
-    const exponent = Math.min(200, (p[2]! / drop) * c * x);
-    const u = nu * Math.exp(1 + nu + exponent);
-    const y = Math.exp(-Math.log1p(u) / nu);
-    if (out) {
-      // d(−ln(1 + u)/ν)/dexponent
-      const byExponent = (-drop * y * u) / (1 + u) / nu;
-      const byDrop = y + byExponent * (-exponent / drop);
-      out[i] = 1 - byDrop;
-      out[i + m] = byDrop;
-      out[i + 2 * m] = -byExponent * (exponent / p[2]!);
-      out[i + 3 * m] = -byExponent * (p[2]! / drop) * c;
-      const powerByNu = (1 + 1 / nu) / (1 + nu) - Math.log1p(nu) / (nu * nu);
-      const lnUByNu = 1 / nu + 1 + exponent * powerByNu;
-      const byNu = Math.log1p(u) / (nu * nu) - ((u / (1 + u)) * lnUByNu) / nu;
-      out[i + 4 * m] = -drop * y * byNu;
-    }
-    return og - drop * y;
-  },
-};
-
-const CLOSED: Record<Exclude<ModelName, 'kinetic'>, Model> = { logistic, logistic5, gompertz, richards };
 const KINETIC_LOWER = [-50, -150, -7, -5, -6, -6];
 const KINETIC_UPPER = [250, 200, 4, 4, 3, 6];
 
@@ -257,6 +148,40 @@ function refuse(model: ModelName, t: Float64Array, g: Float64Array): string | nu
   return null;
 }
 
+/** More points than this are first searched in groups: the way to the bottom is the same, and costs a fraction. */
+const COARSE_FROM = 600;
+const GROUPS = 300;
+
+/** The means of neighbouring points, about so many groups of them. */
+function inGroups(t: Float64Array, g: Float64Array): [Float64Array, Float64Array] {
+  const days = new Float64Array(GROUPS);
+  const points = new Float64Array(GROUPS);
+  for (let k = 0; k < GROUPS; k += 1) {
+    const from = Math.floor((k * t.length) / GROUPS);
+    const to = Math.floor(((k + 1) * t.length) / GROUPS);
+    for (let i = from; i < to; i += 1) {
+      days[k] = days[k]! + t[i]! / (to - from);
+      points[k] = points[k]! + g[i]! / (to - from);
+    }
+  }
+  return [days, points];
+}
+
+/** Least squares from a start, and from others where that one ended against a bound, in a flat place, or not at all. */
+function search(model: ModelName, t: Float64Array, g: Float64Array, start: readonly number[], settings: FitOptions): LeastSquaresFit {
+  const { lower = [], upper = [] } = settings;
+  const problem = problemOf(model, t, g);
+  let best = leastSquares(problem, start, settings);
+  const cornered = (fit: LeastSquaresFit): boolean =>
+    !fit.converged || !fit.covariance || Array.from(fit.parameters).some((value, j) => value <= lower[j]! || value >= upper[j]!);
+  for (const depth of [0, 0.5, 2]) {
+    if (!cornered(best)) break;
+    const other = leastSquares(problem, startOf(model, t, g, depth), settings);
+    if (other.sumOfSquares < best.sumOfSquares * (1 - 1e-9)) best = other;
+  }
+  return best;
+}
+
 /**
  * Fits one of the curves to a record by plain least squares, without priors: for
  * comparison only, since early on such a fit says nothing of the final gravity.
@@ -273,17 +198,10 @@ export function fitModel(model: ModelName, days: ArrayLike<number>, points: Arra
   const upper = options.upper ?? (model === 'kinetic' ? KINETIC_UPPER : CLOSED[model].upper);
   if (lower.some((value, j) => !(value < upper[j]!))) return none('a lower bound is not below its upper one');
 
-  const problem = problemOf(model, t, g);
   const settings: FitOptions = { maxIterations: 100, ...options, lower, upper };
-  let best: LeastSquaresFit = leastSquares(problem, options.start ?? startOf(model, t, g), settings);
-  // Another start where the first ended against a bound, in a flat place, or not at all.
-  const cornered = (fit: LeastSquaresFit): boolean =>
-    !fit.converged || !fit.covariance || Array.from(fit.parameters).some((value, j) => value <= lower[j]! || value >= upper[j]!);
-  for (const depth of [0, 0.5, 2]) {
-    if (!cornered(best)) break;
-    const other = leastSquares(problem, startOf(model, t, g, depth), settings);
-    if (other.sumOfSquares < best.sumOfSquares * (1 - 1e-9)) best = other;
-  }
+  const start = options.start ?? startOf(model, t, g);
+  const coarse = t.length > COARSE_FROM ? search(model, ...inGroups(t, g), start, settings) : null;
+  const best = coarse ? leastSquares(problemOf(model, t, g), coarse.parameters, settings) : search(model, t, g, start, settings);
   if (!Number.isFinite(best.sumOfSquares)) return none('the curve cannot be worked out there');
   const n = namesOf(model).length;
   const variance = best.sumOfSquares / Math.max(1, t.length - n);
