@@ -73,6 +73,7 @@ export class Figures {
 
   private readonly lines = new Map<number, Line | null>();
   private levelMemo: number | null | undefined;
+  private coldMemo: boolean | undefined;
   private fitCache: { key: number; fit: CurveFit | null } | null = null;
   private priorCache: { segment: Segment; prior: Normal } | null = null;
 
@@ -120,6 +121,7 @@ export class Figures {
   protected forget(): void {
     this.lines.clear();
     this.levelMemo = undefined;
+    this.coldMemo = undefined;
   }
 
   /** The record itself was changed: what was fitted to it no longer holds. */
@@ -253,7 +255,12 @@ export class Figures {
     return level === null || whole <= 0 ? 0 : gasLPerH((this.maxRate * (level - mean)) / whole, this.setup.volumeL);
   }
 
+  /** Colder than its range, or than it was two days before. */
   coldNow(): boolean {
+    return (this.coldMemo ??= this.measureCold());
+  }
+
+  private measureCold(): boolean {
     const now = this.track.temperature(this.lookedAt - 12, this.lookedAt);
     if (now === null) return false;
     if (this.setup.temperature && now < this.setup.temperature.minC - 0.4) return true;

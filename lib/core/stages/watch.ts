@@ -222,9 +222,9 @@ export class Watch extends Peak {
 
     const rate = line48 ? -line48.slope : null;
     let crawling = false;
-    const slow = hour > 48 && line48 !== null && rate !== null && rate + line48.se < 2.2 && !this.quickens() && !this.stuck.on && !this.drifting.on && this.quietSinceAddition(60, 96);
+    const slow = hour > 48 && line48 !== null && rate !== null && rate + line48.se < 2.2 && !this.stuck.on && !this.drifting.on && this.quietSinceAddition(60, 96) && !this.quickens();
     // What is left by the yeast's range, or by the curve where that says more. What has come to its end has said so already.
-    const asked = this.peaked.on && rate !== null && (slow || this.sluggish.on);
+    const asked = this.peaked.on && rate !== null && (slow || (this.sluggish.on && !this.stuck.on));
     const left = asked ? Math.max(level - prior.mean, this.terminal.on ? 0 : CURVE_SURE * (this.leftOnCurve()?.value ?? 0)) : 0;
     if (slow && left > 7.5) {
       const end = this.hoursToEnd();
