@@ -2,15 +2,15 @@
  * The solver beside SciPy's curve_fit on the same data, starts and bounds:
  *   npm run bench:fit [-- --sets N]
  * 4- and 5-parameter logistic and the kinetic curve, 500 and 3,000 points, whole
- * and half-finished curves. The last line is one JSON object.
+ * and half-finished curves; then how long judgements and refusals take. The last line
+ * is one JSON object.
  */
 import { spawn, spawnSync } from 'node:child_process';
 import { createInterface } from 'node:readline';
 import { parseArgs } from 'node:util';
-import { assess } from '../../lib/core/assess';
 import { fitModel, modelGravity, startOf, type ModelName } from '../../lib/core/fit/models';
-import type { BatchSetup, Reading } from '../../lib/core/types';
 import { Random } from '../../tests/evaluation/random';
+import { assessments, cellarHistory, refusals } from './assessments';
 
 const { values } = parseArgs({ options: { sets: { type: 'string', default: '240' }, python: { type: 'string', default: 'python3' } } });
 const SETS = Number(values.sets);
@@ -146,31 +146,16 @@ async function main(): Promise<void> {
     wellPosed: posed.length,
     parametersApart: Math.max(...posed.map((row) => row.parameters)),
     standardErrorsApart: Math.max(...posed.map((row) => row.errors)),
-    assess8640Ms: assessment(),
+    assess8640: assessments(),
+    history100S: cellarHistory(),
+    refusal: refusals(),
     groups,
   };
   process.stdout.write(`median ratio ${ratio.toFixed(2)}, p95 ratio ${ratio95.toFixed(2)}; sum of squares within 0.1 % of the best: ours ${withinBest}, SciPy trf ${scipyWithinBest} of ${rows.length}\n`);
-  process.stdout.write(`an assessment of 8,640 readings: ${result.assess8640Ms.toFixed(1)} ms (median of 15)\n`);
+  for (const [name, { ms, stage, stalled }] of Object.entries(result.assess8640)) process.stdout.write(`an assessment of 8,640 readings, ${name.padEnd(5)} ${ms.toFixed(1)} ms (median of 31; ${stage}: ${stalled})\n`);
+  process.stdout.write(`a history, 100 batches of 30 days judged every 6 h: ${result.history100S.toFixed(1)} s\n`);
+  process.stdout.write(`no fit of input that has none: ${result.refusal.ms.toFixed(1)} ms at the longest (${result.refusal.input})\n`);
   process.stdout.write(`${JSON.stringify(result)}\n`);
-}
-
-/** Median time of one assessment of 90 days at 15 minutes. */
-function assessment(): number {
-  const random = new Random(1, 'assess');
-  const pitchedAt = Date.UTC(2026, 1, 1);
-  const readings: Reading[] = [];
-  for (let i = 0; i < 8640; i += 1) {
-    const day = i / 96;
-    readings.push({ at: pitchedAt + i * 900_000, gravity: 1 + (modelGravity('kinetic', [75, 2, -1.6, 0.2, -0.8, -0.5], day) + random.normal(0, 0.5)) / 1000, temperature: 19 + random.normal(0, 0.3) });
-  }
-  const setup: BatchSetup = { kind: 'mead', pitchedAt, originalGravity: 1.075, volumeL: 9, vesselL: 11, attenuation: { min: 0.94, max: 1.02 }, alcoholToleranceAbv: 14, temperature: { minC: 16, maxC: 23 }, events: [] };
-  const times: number[] = [];
-  for (let k = 0; k < 25; k += 1) {
-    const begun = performance.now();
-    assess(setup, readings, pitchedAt + 90 * 86_400_000);
-    if (k >= 10) times.push(performance.now() - begun);
-  }
-  return quantile(times, 0.5);
 }
 
 void main();
