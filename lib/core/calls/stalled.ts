@@ -34,7 +34,11 @@ export function stalledCall(scene: Scene): Call {
     });
   }
   if (watch.sluggish.on) {
-    return call('yes', `Slow: ${rate ? rateWords(rate.value) : 'little fall'}.`, `${above} above the expected end; at this pace more than 5 days to go.${hint(scene, watch.coldNow())}`, {
+    // Below what the yeast's range expects, the curve is what says that more will come.
+    const over = level - watch.fgPrior().mean;
+    const byCurve = watch.leftOnCurve()?.value ?? 0;
+    const toGo = over > 1 || byCurve < over ? `${above} above the expected end` : `${pointsWords(byCurve)} to go by its curve`;
+    return call('yes', `Slow: ${rate ? rateWords(rate.value) : 'little fall'}.`, `${toGo}; at this pace more than 5 days to go.${hint(scene, watch.coldNow())}`, {
       kind: 'sluggish',
       since: sinceOf(scene, watch.sluggish.since),
       evidence: figures,

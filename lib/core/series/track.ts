@@ -85,7 +85,7 @@ export class Track {
       this.taken = to;
       this.sinceMeasured += to - from;
     }
-    if (this.sinceMeasured >= 12) this.measureSpacing();
+    if (this.sinceMeasured >= Math.min(12, this.taken / 2)) this.measureSpacing();
   }
 
   private age(i: number): void {
@@ -106,11 +106,11 @@ export class Track {
     return range ? (range.minC + range.maxC) / 2 : USUAL_C;
   }
 
-  /** Spacing of the last 60 readings; it decides how long a silence is long. */
+  /** Spacing of the last 60 readings; it decides how long a silence is long, and whether the record is one read by hand. */
   private measureSpacing(): void {
-    this.sinceMeasured = 0;
     const n = this.taken;
-    if (n < 3) return;
+    if (n < 2) return;
+    this.sinceMeasured = 0;
     const from = Math.max(1, n - 60);
     for (let i = from; i < n; i += 1) scratch[i - from] = (this.readings[i]!.at - this.readings[i - 1]!.at) / HOUR_MS;
     this.spacing = medianInPlace(scratch, 0, n - from);

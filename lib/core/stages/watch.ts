@@ -30,6 +30,9 @@ const QUIET_PACE = 1 / 3;
 /** Share of what the curve says is left that counts against the yeast's range (ours): early it may see too much. */
 const CURVE_SURE = 0.75;
 
+/** Rise over a week, points a day, under which a float that drifted is at rest again (ours). */
+const STILL_CLIMB = 0.02;
+
 /** Points below the lowest level of a stall at which one is over: a level at the limit must not flicker (dead band as in ANSI/ISA-18.2; its width is ours). */
 const STUCK_BAND = 1;
 
@@ -77,7 +80,7 @@ export class Watch extends Peak {
     const day = this.line(48);
     hold(this.rising, hour, day !== null && day.slope - 1.64 * day.se > 0.25, 2, day !== null && day.slope - 1.64 * day.se <= 0);
     const settled = this.quietSinceAddition(48, 240);
-    hold(this.drifting, hour, settled && !this.segment.fruit && hour > 96 && (this.rising.on || (day !== null && day.slope > 0 && this.climbs(168))), 8, !this.rising.on);
+    hold(this.drifting, hour, settled && !this.segment.fruit && hour > 96 && ((this.rising.on && !this.stuck.on) || (day !== null && day.slope > 0 && this.climbs(168))), 8, !this.rising.on && !this.climbsStill());
     if (this.lastHand && Math.abs(this.lastHand.miss) > 4 && hour - this.lastHand.hour < 168 && this.lastHand.hour > 12) {
       hold(this.drifting, hour, true, 1, false);
     }
@@ -192,6 +195,12 @@ export class Watch extends Peak {
     return line !== null && line.slope - 1.64 * line.se > (window === 72 ? 0.12 : 0.06);
   }
 
+  /** A float that was seen to climb drifts on until its week has come to rest: at the limit it must not flicker. */
+  private climbsStill(): boolean {
+    const week = this.drifting.on ? this.line(168) : null;
+    return week !== null && week.slope > STILL_CLIMB;
+  }
+
   private judgeStall(hour: number): void {
     if (this.sweetHeld()) {
       clear(this.stuck);
@@ -209,15 +218,16 @@ export class Watch extends Peak {
       settled &&
       (slowerThan(line48, 0.5, 0.75) || slowerThan(this.line(72), 0.35, 0.5)) &&
       (hour - (this.started.since ?? hour) > 96 || this.progress(level) > 0.12);
-    const climbing = (flat || this.stuck.on) && (this.drifting.on || this.climbs(72) || this.climbs(168));
+    const climbs = (): boolean => this.drifting.on || this.climbs(72) || this.climbs(168);
     const falls = (window: number, sure: number): boolean => {
       const line = this.line(window);
       return line !== null && -line.slope - sure * line.se > 1;
     };
     // A few hours are soon deceived by noise: they must say so twice.
     this.stirs = this.stuck.on && falls(8, 2.5) ? this.stirs + 1 : 0;
-    const moving = this.stuck.on && (falls(24, 1.64) || this.stirs > 1);
-    hold(this.stuck, hour, flat && !climbing, 3, moving || level < limit - STUCK_BAND || climbing);
+    const moving = this.stuck.on && (falls(24, 1.64) || this.stirs > 1) && this.belowStall(level);
+    // A few days' climb keeps from calling it stuck, but only a float that has drifted takes it back: about a level that stands a float swings.
+    hold(this.stuck, hour, flat && !climbs(), 3, moving || level < limit - STUCK_BAND || this.drifting.on);
     if (this.stuck.on) this.stuckCold = this.coldNow();
 
     const rate = line48 ? -line48.slope : null;
@@ -226,12 +236,18 @@ export class Watch extends Peak {
     // What is left by the yeast's range, or by the curve where that says more. What has come to its end has said so already.
     const asked = this.peaked.on && rate !== null && (slow || (this.sluggish.on && !this.stuck.on));
     const left = asked ? Math.max(level - prior.mean, this.terminal.on ? 0 : CURVE_SURE * (this.leftOnCurve()?.value ?? 0)) : 0;
-    if (slow && left > 7.5) {
+    if (slow && left > 7.5 && !climbs()) {
       const end = this.hoursToEnd();
       const fg = this.expectedFg();
       crawling = (end !== null && end > 130) || left > 6 * Math.max(rate, 0.3) || (fg !== null && fg > this.zoneTop());
     }
-    hold(this.sluggish, hour, crawling, 3, (rate !== null && rate > 2.6) || left < 5 || this.stuck.on);
+    hold(this.sluggish, hour, crawling, 3, (rate !== null && rate > 2.6) || left < 5 || this.stuck.on || this.drifting.on);
+  }
+
+  /** Below where it stood: what only swings about its level has not begun to fall. */
+  private belowStall(level: number): boolean {
+    const stood = this.stuck.since === null ? null : this.track.level(this.stuck.since - 48, this.lookedAt - 24);
+    return stood === null || level < this.track.calibrate(stood) - STUCK_BAND;
   }
 
   private judgeRefermentation(hour: number): void {

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
-import { assess } from '../../../lib/core/assess';
+import { assess, assessEvery } from '../../../lib/core/assess';
 import { modelGravity } from '../../../lib/core/fit/models';
-import type { BatchEvent, BatchSetup, Reading } from '../../../lib/core/types';
+import type { BatchEvent, BatchSetup, CallName, Reading } from '../../../lib/core/types';
 import { Random } from '../../evaluation/random';
 
 const PITCH = Date.UTC(2026, 1, 20, 18);
@@ -292,5 +292,34 @@ describe('hydrometer readings alone', () => {
     expect(bottle.verdict).toBe('unknown');
     expect(bottle.act).toMatch(/^Read again /);
     expect(bottle.expectedAt).toBeGreaterThan(PITCH + 23 * DAY);
+  });
+});
+
+describe('calls that do not flicker', () => {
+  /** How often a call turns to yes, looked at every six hours from that day on. */
+  const rises = (call: CallName, readings: Reading[], from: number, to: number, extra: Partial<BatchSetup> = {}): number => {
+    const times = Array.from({ length: (to - from) * 4 }, (_, i) => PITCH + (from + i / 4) * DAY);
+    const said = [...assessEvery({ ...setup, ...extra }, readings, times, { picture: false })].map(({ assessment }) => assessment.calls[call].verdict === 'yes');
+    return said.filter((yes, i) => yes && !said[i - 1]).length;
+  };
+
+  it('take a record of two readings a week for one read by hand, from its second reading on', () => {
+    const days = [0, 3, 7, 10, 14, 17, 21, 24, 28];
+    const readings = days.map((day): Reading => ({ at: PITCH + day * DAY, gravity: 1 + cider(day) / 1000, temperature: 19 }));
+    expect(rises('sensor', readings, 4, 28)).toBe(0);
+    expect(at(10.5, readings).calls.started.verdict).toBe('yes');
+    expect(at(10.5, readings).ratePointsPerDay).not.toBeNull();
+  });
+
+  it('do not come and go while a float swings about a level at which it has stopped', () => {
+    const stuck = (day: number): number => Math.max(55 - 5 * day, 20);
+    const swinging = record(45, (day) => stuck(day) + 0.5 * Math.sin((2 * Math.PI * day) / 5));
+    expect(rises('stalled', swinging, 10, 45)).toBe(1);
+  });
+
+  it('name a float that climbs once, until it has come to rest', () => {
+    const drifting = record(60, (day) => cider(day) + 0.2 * Math.max(0, day - 20) + 0.2 * Math.sin((2 * Math.PI * day) / 7));
+    expect(rises('sensor', drifting, 10, 60)).toBe(1);
+    expect(rises('stalled', drifting, 25, 60)).toBe(0);
   });
 });
