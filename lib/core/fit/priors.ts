@@ -101,10 +101,14 @@ function bySugars(kind: DrinkKind, originalPoints: number, toleranceAbv: number 
   return n(pointsAtShare(originalPoints, share.mean), Math.max(SD_FLOOR, fall / 2) / Math.sqrt(weight));
 }
 
-/** Two independent normals as one, weighted by their variances. */
+/**
+ * Two independent normals as one, weighted by their variances, and wider where they lie
+ * further apart than these explain (R. T. Birge, Physical Review 40 (1932) 207, from memory).
+ */
 function both(a: Normal, b: Normal): Normal {
   const weight = b.sd ** 2 / (a.sd ** 2 + b.sd ** 2);
-  return n(weight * a.mean + (1 - weight) * b.mean, (a.sd * b.sd) / Math.hypot(a.sd, b.sd));
+  const apart = Math.hypot(a.sd, b.sd);
+  return n(weight * a.mean + (1 - weight) * b.mean, ((a.sd * b.sd) / apart) * Math.max(1, Math.abs(a.mean - b.mean) / apart));
 }
 
 /**

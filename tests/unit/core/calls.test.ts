@@ -317,6 +317,15 @@ describe('calls that do not flicker', () => {
     expect(rises('stalled', swinging, 10, 45)).toBe(1);
   });
 
+  it('see a mead that rests where its yeast was said to end as finished, though its honey could have gone lower', () => {
+    const mead = record(70, (day) => modelGravity('kinetic', [75, 2, -1, 0.2, -1.2, -1], day));
+    const told: Partial<BatchSetup> = { kind: 'mead', originalGravity: 1.075, attenuation: { min: 0.94, max: 1.02 }, alcoholToleranceAbv: 14 };
+    const { stage, calls } = at(69, mead, told);
+    expect(stage).toBe('terminal');
+    expect(calls.stalled.verdict).toBe('no');
+    expect(calls.bottle.verdict).toBe('yes');
+  });
+
   it('name a float that climbs once, until it has come to rest', () => {
     const drifting = record(60, (day) => cider(day) + 0.2 * Math.max(0, day - 20) + 0.2 * Math.sin((2 * Math.PI * day) / 7));
     expect(rises('sensor', drifting, 10, 60)).toBe(1);

@@ -37,8 +37,6 @@ describe('the prior of the final gravity', () => {
     const mead = finalGravityPrior({ kind: 'mead', ...low }, 90, 1, false);
     expect(mead.mean).toBeLessThan(90 * 0.05 - 3);
     expect(mead.mean).toBeGreaterThan(-12);
-    const card = 90 * (0.05 / 1.28);
-    expect(mead.sd).toBeLessThan(card);
     // An apple juice without a card ends near 0.998, as dry ciders do (common practice).
     const cider = finalGravityPrior({ kind: 'cider', attenuation: null, alcoholToleranceAbv: null }, 50, 1, false);
     expect(Math.abs(cider.mean + 2)).toBeLessThan(2);
@@ -47,6 +45,16 @@ describe('the prior of the final gravity', () => {
     // A must whose alcohol would near what the yeast bears is left to the card.
     const strong = finalGravityPrior({ kind: 'mead', attenuation: { min: 0.6, max: 0.7 }, alcoholToleranceAbv: null }, 110, 1, false);
     expect(strong.mean).toBeCloseTo(110 * 0.35, 5);
+  });
+
+  it('is wider where the card and the sugars lie far apart than where they agree', () => {
+    const of = (min: number, max: number) => finalGravityPrior({ kind: 'mead', attenuation: { min, max }, alcoholToleranceAbv: 18 }, 75, 1, false);
+    const [agreed, apart] = [of(1.04, 1.14), of(0.92, 1.02)];
+    // Two that agree know more than the card alone.
+    expect(agreed.sd).toBeLessThan(75 * (0.05 / 1.28));
+    expect(apart.sd).toBeGreaterThan(1.5 * agreed.sd);
+    // What the card says is still within reach.
+    expect(apart.mean + 1.28 * apart.sd).toBeGreaterThan(75 * 0.03);
   });
 
   it('stops a strong mead at what its yeast bears', () => {
