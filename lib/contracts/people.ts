@@ -78,7 +78,8 @@ export const updateCellar = z.object({ name: line(80).optional(), time_zone: tim
 export const deleteCellar = z.object({ name: z.string().max(200), passphrase: given });
 export const madeCellar = z.object({ id });
 
-export const createInvitation = z.object({ email, role, expires_in_days: z.number().int('must be whole days').min(1, 'must be 1 to 30 days').max(30, 'must be 1 to 30 days').default(7) });
+/** Strict, as all that gives access: a limit that was mistyped must not become the usual one. */
+export const createInvitation = z.strictObject({ email, role, expires_in_days: z.number().int('must be whole days').min(1, 'must be 1 to 30 days').max(30, 'must be 1 to 30 days').default(7) });
 export type CreateInvitation = z.infer<typeof createInvitation>;
 export const invitationSchema = z.object({ id, email: z.string(), role, invited_by: z.string().nullable(), created_at: z.string(), expires_at: z.string(), state: z.enum(['open', 'expired', 'accepted']), accepted_by: z.string().nullable(), mail: z.enum(['waiting', 'sent', 'failed']) });
 export type InvitationBody = z.infer<typeof invitationSchema>;
@@ -113,7 +114,7 @@ export const withCode = z.object({ passphrase: given, code });
 export const recoveryCodes = z.object({ recovery_codes: z.array(z.string()) });
 export const deleteAccount = z.object({ passphrase: given, code: code.optional(), email });
 
-export const createToken = z.object({ name: line(60), role, expires_in_days: z.number().int('must be whole days').min(1, 'must be 1 to 730 days').max(730, 'must be 1 to 730 days').nullable().default(90) });
+export const createToken = z.strictObject({ name: line(60), role, expires_in_days: z.number().int('must be whole days').min(1, 'must be 1 to 730 days').max(730, 'must be 1 to 730 days').nullable().default(90) });
 export type CreateToken = z.infer<typeof createToken>;
 export const tokenSchema = z.object({ id, name: z.string(), role, person: z.object({ id, name: z.string() }), last_four: z.string(), created_at: z.string(), expires_at: z.string().nullable(), last_used_at: z.string().nullable(), mine: z.boolean() });
 export type TokenBody = z.infer<typeof tokenSchema>;

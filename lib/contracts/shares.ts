@@ -8,8 +8,8 @@ import { linkToken } from './jobs';
 import { LOT_SPARKLES } from './lots';
 import { SPARKLES_FOUND, tastingSummary } from './tastings';
 
-/** `POST /api/v1/batches/{id}/shares`. */
-export const createShare = z.object({
+/** `POST /api/v1/batches/{id}/shares`. Strict, as all that gives access: a limit that was mistyped must not become the widest. */
+export const createShare = z.strictObject({
   expires_in_days: z.number('must be a number of days').int().min(1, 'must be at least a day').max(1825, 'must be at most five years').default(365),
   /** The sharer's own name, and those of tasters who chose it. */
   show_people: z.boolean().default(false),
