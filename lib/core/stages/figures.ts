@@ -2,6 +2,7 @@ import type { BatchSetup, Instant, Neck } from '../types';
 import type { CurveFit } from '../fit/map';
 import { finalGravityPrior, type Normal } from '../fit/priors';
 import { gasLPerH, swapGasLPerH } from '../gas/gas';
+import { selfHeatingC } from '../gas/heat';
 import type { Line } from '../series/line';
 import { Track, type Segment } from '../series/track';
 import { pointsOf } from '../units/convert';
@@ -11,6 +12,9 @@ import { held } from './remaining';
 
 /** Standard deviation of a hydrometer reading by hand, points (our own). */
 export const HAND_SD = 0.7;
+
+/** Fall of temperature within two to four days, °C, from which on it has turned cold (ours). */
+const COOLED_C = 4;
 
 /** A float whose readings have all but stopped flickering. */
 export interface FrozenState {
@@ -265,6 +269,11 @@ export class Figures {
     if (now === null) return false;
     if (this.setup.temperature && now < this.setup.temperature.minC - 0.4) return true;
     const before = this.track.temperature(this.lookedAt - 96, this.lookedAt - 48);
-    return before !== null && before - now > 4;
+    if (before === null || before - now <= COOLED_C) return false;
+    // The heat of its own work goes when the work is done: that is no cold.
+    const worked = this.track.line(this.lookedAt - 96, this.lookedAt - 48);
+    const works = this.line(24);
+    const own = selfHeatingC(this.setup.volumeL, worked ? -worked.slope : 0) - selfHeatingC(this.setup.volumeL, works ? -works.slope : 0);
+    return before - now - Math.max(0, own) > COOLED_C;
   }
 }
