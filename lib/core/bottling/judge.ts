@@ -162,8 +162,8 @@ function bottleProblems(request: BenchRequest, p: BottlePicture): Problem[] {
     }
     return [];
   }
-  if (p.worst.bar <= STILL_LIMIT_BAR && !primes(request)) return [];
   const rated = ratedBar(p.holds.rating);
+  if (p.worst.bar <= Math.min(STILL_LIMIT_BAR, rated) && !primes(request)) return [];
   const problems: Problem[] = [];
   if (p.warm.bar > rated) problems.push(about('over_rating', `As asked a ${name} reaches ${bar(p.warm.bar)} bar ${at}. It is rated for ${bar(rated)}.`));
   else if (p.worst.bar > rated) {

@@ -286,6 +286,17 @@ describe('whatever is asked', () => {
       );
     });
 
+  test('a still drink too is held against a bottle that is said to hold less than still drink may reach', () => {
+    const request = benchRequest(
+      { bottles: [bottle('beer', 'crown_26', 500, 0.5)], warmestStoreC: 5, warmestSinceEndC: 0, priming: { way: 'weighed', sugar: primingSugar('sucrose'), wantedVolumes: 0 } },
+      { originalGravity: 1.035, hydrometer: twice(0.99).hydrometer },
+    );
+    const verdict = judgeBench(request);
+    expect(verdict.bottles[0]!.worst.bar).toBeGreaterThan(0.5);
+    expect(verdict.bottles[0]!.worst.bar).toBeLessThan(1);
+    expect(verdict.verdict).toBe('stop');
+  });
+
   test('a stop never shows a dose, and safe always means: done, and at worst within what the bottle holds', () => {
     fc.assert(
       fc.property(anyRequest, (request) => {
