@@ -8,6 +8,9 @@ const ROOT = resolve(import.meta.dirname, '..');
 /** Suites in the order of their cost, each in a run of its own: two cores and one database do not share well. */
 const SUITES = [['unit', 'reference'], ['evaluation'], ['integration'], ['fault'], ['browser']];
 
+/** What `vitest.config.ts` runs two files at a time. */
+const IN_TWOS = ['integration', 'browser'];
+
 interface Count {
   passed: number;
   failed: number;
@@ -47,8 +50,8 @@ async function suite(projects: string[], folder: string): Promise<Count> {
   console.log(`\n== ${projects.join(', ')}`);
   let { code, files } = await vitest(projects, join(folder, `${projects[0]}.json`));
   const broken = files.filter(({ status }) => status === 'failed');
-  // A machine of CI is now and then too slow for a browser. A file, not a test, is run again: its tests go on from one another. What fails twice is wrong.
-  if (process.env.CI && projects.includes('browser') && broken.length > 0) {
+  // A machine of CI is now and then too slow for two files with a server or a browser each. A file, not a test, is run again: its tests go on from one another. What fails twice is wrong.
+  if (process.env.CI && projects.some((project) => IN_TWOS.includes(project)) && broken.length > 0) {
     for (const file of broken) console.log(`\nOnce more: ${relative(ROOT, file.name)}, since it failed: ${failedIn(file).map(({ fullName }) => fullName).join('; ') || 'it did not load'}`);
     const again = await vitest(projects, join(folder, 'again.json'), broken.map(({ name }) => name));
     files = [...files.filter((file) => !broken.includes(file)), ...again.files];

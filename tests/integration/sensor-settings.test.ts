@@ -77,6 +77,7 @@ describe('settings on a sensor’s topic', () => {
     const link = new SensorLink({ url: `mqtt://127.0.0.1:${broker.port}`, sensor: sensor.identifier, secret, onSettings: (told) => held.float?.obey(told) });
     const float = (held.float = new RunningFloat({ sensor: sensor.identifier, secret, scenario: 'healthy-cider', seed: 3, startedAt: new Date(start).toISOString(), interval_s: 900 }, link, clock, start));
     const run = async (hours: number) => {
+      await until('what was sent before', () => link.waiting === 0);
       clock.advance(hours * 3_600_000);
       const before = link.acknowledged;
       float.tick();
