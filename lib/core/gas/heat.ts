@@ -4,7 +4,12 @@ const DEGREES_PER_POINT = 0.31;
 /** Hours in which a vessel loses most of a difference to its room: our own choice, longer the larger it is. */
 const lossHours = (volumeL: number): number => 4 + 0.6 * volumeL;
 
-/** °C above its room of a vessel that falls steadily by so many points a day. */
+/**
+ * °C above its room of a vessel that works steadily (Williams 1982, above; the loss is our own).
+ *
+ * @param volumeL what is in the vessel, L
+ * @param pointsPerDay fall of the gravity; a rise warms nothing
+ */
 export function selfHeatingC(volumeL: number, pointsPerDay: number): number {
   return (DEGREES_PER_POINT / 24) * lossHours(volumeL) * Math.max(0, pointsPerDay);
 }
