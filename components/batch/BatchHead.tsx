@@ -6,6 +6,7 @@ import { answersOfFacts } from '@/components/how/judged';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Vessel } from '@/components/vessel/Vessel';
 import type { VesselState } from '@/components/vessel/describe';
+import { Haze } from '@/components/ui/Haze';
 import type { BatchBody } from '@/lib/contracts/batches';
 import type { Fact } from './facts';
 import { placeWords } from './words';
@@ -33,7 +34,7 @@ function Facts({ batch, facts, phone }: { batch: BatchBody; facts: readonly Fact
           <dt className="type-label truncate text-[0.71875rem] text-ink2">{names[fact.name] ?? fact.name}</dt>
           {/* Words are longer than figures and would touch their neighbour. */}
           <dd className={`font-mono font-semibold leading-5 ${phone && !/\d/.test(fact.figure) ? 'text-[0.8125rem]' : 'whitespace-nowrap text-[0.96875rem]'}`}>
-            {fact.figure}
+            {fact.arriving ? <Haze height={20} label={`Loading: ${names[fact.name] ?? fact.name}`} className="w-14" /> : fact.figure}
             {fact.more && !phone && <span className="type-label pl-1.5 text-ink2">{fact.more}</span>}
           </dd>
         </div>

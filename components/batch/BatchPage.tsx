@@ -88,13 +88,14 @@ function Loaded({ batch }: { batch: BatchBody }) {
   const asked = useSettled(chosen);
   const iso = (at: number) => new Date(at * 1000).toISOString();
   const series = useSeries(batch.id, asked ? { from: iso(asked.from), to: iso(asked.to), points: POINTS } : { points: POINTS });
-  const last = useMemo(() => lastReading(series.series), [series.series]);
+  const last = useMemo(() => lastReading(series.series, series.error !== undefined), [series.series, series.error]);
   const now = nowOf(nowMs ?? Date.parse(batch.assessment?.at ?? batch.created_at), last?.at ?? null);
   const { judgement, error: judgementError, retry: retryJudgement } = useJudgement(batch.id);
   const { entries, error: entriesError, retry: retryEntries } = useEntries(batch.id, { limit: 200 });
   const { changes } = useVerdictChanges(batch.id);
 
   const judged = judgement ?? batch.assessment;
+  const judging = judged === null && judgement === undefined && judgementError === undefined;
   const shown = useMemo(() => ({ ...batch, assessment: judged }), [batch, judged]);
   const footing = judgement?.footing ?? null;
   // What has ended is looked at from its end.
@@ -110,7 +111,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
 
   const rows = useMemo(() => (judged ? callRows(batch, judged, now, timeZone) : []), [batch, judged, now, timeZone]);
   const log = useMemo(() => logRows(entries ?? [], changes ?? []), [entries, changes]);
-  const facts = factsOf(shown, last, asOf, timeZone, useSurroundings(batch.id).data?.probes);
+  const facts = factsOf(shown, last, asOf, timeZone, useSurroundings(batch.id).data?.probes, judging);
   const racked = judged?.stage === 'terminal' && (entries ?? []).some((entry) => entry.kind === 'rack');
   const vessel = vesselOf(shown, racked);
 
@@ -162,6 +163,8 @@ function Loaded({ batch }: { batch: BatchBody }) {
           {!working && <Ended batch={shown} entries={entries ?? []} timeZone={timeZone} onReopen={actions.onSetup} className="max-strip:hidden" />}
           {judged ? (
             <Calls over={!working} rows={rows} judgedAt={clock(Date.parse(judged.at) / 1000, timeZone)} pending={judgement?.pending ?? false} scene={scene} />
+          ) : judging ? (
+            <Haze height={260} label="Loading the calls" className="m-(--margin)" />
           ) : (
             <p className="type-body px-(--margin) py-3 text-ink2">Not judged yet. {batch.pitched_at === null ? 'Log the pitch; the calls follow.' : `It is ${STAGE_WORDS.unknown} how it goes until the first readings are in.`}</p>
           )}
@@ -194,7 +197,9 @@ function nowOf(clockMs: number, lastAt: number | null): number {
   return lastAt !== null && lastAt > now && lastAt < now + 120 ? lastAt : now;
 }
 
-function lastReading(series: SeriesBody | undefined): LastReading | null {
+/** Undefined while the readings are on their way. */
+function lastReading(series: SeriesBody | undefined, failed: boolean): LastReading | null | undefined {
+  if (!series && !failed) return undefined;
   const index = series?.gravity.findLastIndex((value) => value !== null) ?? -1;
   return series && index >= 0 ? { at: series.at[index]!, gravity: series.gravity[index]! } : null;
 }

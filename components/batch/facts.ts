@@ -12,15 +12,20 @@ export interface Fact {
   more: string | null;
   /** Shown on a phone too. */
   phone: boolean;
+  /** Still on its way: nothing is said of it yet. */
+  arriving?: boolean;
 }
 
 const share = (part: number, whole: number) => Math.round((part / whole) * 100);
 
+const ARRIVING = { figure: '–', more: null, arriving: true } as const;
+
 /** What is last known of the gravity: the judged one, else the last reading with its time. */
-function gravityFact(batch: BatchBody, last: LastReading | null, now: number, timeZone: string): Pick<Fact, 'figure' | 'more'> {
+function gravityFact(batch: BatchBody, last: LastReading | null | undefined, now: number, timeZone: string): Omit<Fact, 'phone'> {
   const judged = batch.assessment?.gravity;
-  if (judged) return { figure: gravityText(judged.value), more: doubt(judged) };
-  return last ? { figure: gravityText(last.gravity), more: `at ${when(last.at, now, timeZone)}` } : { figure: 'not known', more: null };
+  if (judged) return { name: batch.state === 'working' ? 'now' : 'last known', figure: gravityText(judged.value), more: doubt(judged) };
+  if (last === undefined) return { name: 'now', ...ARRIVING };
+  return last ? { name: 'last known', figure: gravityText(last.gravity), more: `at ${when(last.at, now, timeZone)}` } : { name: 'now', figure: 'not read', more: null };
 }
 
 export interface LastReading {
@@ -41,8 +46,13 @@ function probeFacts(probes: readonly ProbeBody[]): Fact[] {
   ];
 }
 
-/** What a reader wants at once, in the order of the fall. `now` in seconds since 1970. */
-export function factsOf(batch: BatchBody, last: LastReading | null, now: number, timeZone: string, probes: readonly ProbeBody[] = []): Fact[] {
+/**
+ * What a reader wants at once, in the order of the fall.
+ * @param last undefined while the readings are on their way
+ * @param now seconds since 1970
+ * @param judging no judgement is here, and one is on its way
+ */
+export function factsOf(batch: BatchBody, last: LastReading | null | undefined, now: number, timeZone: string, probes: readonly ProbeBody[] = [], judging = false): Fact[] {
   const { assessment: judged, original_gravity: og } = batch;
   const seconds = (iso: string) => Date.parse(iso) / 1000;
   const day = dayOf(batch.pitched_at, now, timeZone);
@@ -54,13 +64,14 @@ export function factsOf(batch: BatchBody, last: LastReading | null, now: number,
   return [
     { name: 'pitched', figure: batch.pitched_at ? dayName(seconds(batch.pitched_at), timeZone) : 'not yet', more: day === null ? null : `day ${day}`, phone: false },
     { name: 'original gravity', figure: og === null ? 'not told' : gravityText(og), more: null, phone: true },
-    { name: judged?.gravity && batch.state === 'working' ? 'now' : 'last known', ...gravityFact(batch, last, now, timeZone), phone: true },
-    { name: 'bed', figure: bed ? gravityText(bed.value) : 'not known', more: bed && doubt(bed), phone: false },
+    { ...gravityFact(batch, judging ? undefined : last, now, timeZone), phone: true },
+    { name: 'bed', ...(judging ? ARRIVING : { figure: bed ? gravityText(bed.value) : 'not known', more: bed && doubt(bed) }), phone: false },
     { name: 'attenuation', figure: fallen === null ? '–' : `${Math.round(fallen)} %`, more: attenuable === null ? null : `of ${attenuable}`, phone: true },
     { name: 'strength so far', figure: judged?.abv_percent ? percent(judged.abv_percent.value) : '–', more: judged?.expected_abv_percent ? `of ${judged.expected_abv_percent.value.toFixed(1)}` : null, phone: true },
     {
       name: 'likely end',
-      figure: judged?.stage === 'terminal' ? 'reached' : end && seconds(end.hi) > now ? dayRange(seconds(end.lo), seconds(end.hi), timeZone) : 'not known',
+      ...(judging && { arriving: true }),
+      figure: judging ? '–' : judged?.stage === 'terminal' ? 'reached' : end && seconds(end.hi) > now ? dayRange(seconds(end.lo), seconds(end.hi), timeZone) : 'not known',
       more: null,
       phone: false,
     },

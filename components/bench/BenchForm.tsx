@@ -37,7 +37,7 @@ export function BenchForm({ draft, errors, facts, onChange }: { draft: BenchDraf
           value={draft.warmestSinceEnd}
           // What nobody has been asked yet is no fault of theirs.
           error={draft.warmestSinceEnd === '' ? undefined : errors.warmest_since_end_c}
-          hint={measured === null ? 'No sensor measured it. If in doubt, say it colder: cold drink holds more gas.' : <Sentence>{`The sensor measured ${measured.toFixed(1)} °C; the colder of the two is used.`}</Sentence>}
+          hint={measured === null ? `${facts.done.gravity === null ? 'Since when it stands still is not known.' : 'No sensor measured it.'} If in doubt, say it colder: cold drink holds more gas.` : <Sentence>{`The sensor measured ${measured.toFixed(1)} °C; the colder of the two is used.`}</Sentence>}
           onChange={(event) => onChange({ warmestSinceEnd: event.target.value })}
         />
       </div>

@@ -12,6 +12,7 @@ import { EmptyState, ErrorState } from '@/components/ui/Notice';
 import { LinkButton } from '@/components/ui/Button';
 import { useNow } from '@/components/ui/now';
 import { How } from '@/components/ui/How';
+import { Sentence } from '@/components/ui/Sentence';
 import { State } from '@/components/ui/StateMark';
 import { Vessel } from '@/components/vessel/Vessel';
 import type { VesselState } from '@/components/vessel/describe';
@@ -34,7 +35,7 @@ import { formOf, newDraft, requestOf, takeWay, type BenchErrors } from './draft'
 import { limitOf, scaleTop, Tubes } from './Tubes';
 import { Verdict, Ways } from './Verdict';
 import { Weeks } from './Weeks';
-import { FIELD_WORDS, SHORT_BOTTLE, sizeWords } from './words';
+import { assumedWords, FIELD_WORDS, SHORT_BOTTLE, sizeWords } from './words';
 
 /** The bench of one batch. */
 export function BenchPage({ id }: { id: string }) {
@@ -84,6 +85,7 @@ function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
   const verdict = useMemo(() => request && judgeBench(request), [request]);
   const now = useNow();
   const { batch, done } = facts;
+  const assumed = assumedWords(facts);
   return (
     <div className="drink wide:grid wide:min-h-[calc(100dvh-var(--header))] wide:grid-cols-[412px_minmax(0,1fr)] wide:grid-rows-[auto_1fr]" style={{ '--drink': drinkHex(batch.drink_colour) } as CSSProperties}>
       <div className="bg-desk px-(--margin) py-3 max-wide:border-b-[1.5px] max-wide:border-ink wide:border-r-[1.5px] wide:border-ink">
@@ -114,7 +116,7 @@ function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
           </div>
         </div>
       </div>
-      <div className="border-b-[1.5px] border-ink">{verdict ? <Verdict verdict={verdict} /> : <Unfilled errors={errors ?? {}} />}</div>
+      <div className="border-b-[1.5px] border-ink">{verdict ? <Verdict verdict={verdict} /> : <Unfilled errors={errors ?? {}} facts={facts} />}</div>
       <div className="bg-desk px-(--margin) pb-4 wide:border-r-[1.5px] wide:border-ink">
         <Done facts={facts} timeZone={timeZone} />
         <BenchForm draft={draft} errors={errors ?? {}} facts={facts} onChange={(part) => setDraft((before) => ({ ...before, ...part }))} />
@@ -127,7 +129,7 @@ function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
         {verdict?.verdict === 'stop' && <Ways ways={verdict.ways} onUse={(way) => way.request && setDraft((before) => takeWay(before, way.request!))} />}
         {verdict?.verdict === 'safe' && request && now !== null && <After now={now} cellarC={request.cellarC} primed={primes(request)} timeZone={timeZone} />}
         {verdict && request && <BottleTable verdict={verdict} request={request} />}
-        {facts.for_gas.assumed && <p className="type-reason border-t px-(--margin) py-2 text-ink2">Nobody told the original gravity: strength and sugar are taken at the upper end of what they may be.</p>}
+        {assumed && <p className="type-reason border-t px-(--margin) py-2 text-ink2">{assumed}</p>}
         <Cautions />
       </div>
     </div>
@@ -135,9 +137,21 @@ function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
 }
 
 /** Nothing is judged while something is missing; it says what. */
-function Unfilled({ errors }: { errors: BenchErrors }) {
+function Unfilled({ errors, facts: { batch, done } }: { errors: BenchErrors; facts: BenchFacts }) {
   const [path = '', wrong = ''] = Object.entries(errors)[0] ?? [];
   const field = FIELD_WORDS[path.split('.').at(-1) ?? ''];
+  // Without a reading no answer of the form would let anything be filled: that comes first.
+  if (done.gravity === null)
+    return (
+      <section aria-label="Verdict" className="bg-lit px-(--margin) py-4">
+        <State state="Check" word="Not judged yet" />
+        <h2 className="type-verdict-top">Nothing is filled before it is read by hand</h2>
+        <p className="type-body pb-3 text-ink2">
+          <Sentence>{`Asked: ${done.changes_it[0]!.toLowerCase()}${done.changes_it.slice(1)}`}</Sentence>
+        </p>
+        <LinkButton href={`/batches/${batch.id}`}>To the batch</LinkButton>
+      </section>
+    );
   return (
     <section aria-label="Verdict" className="bg-lit px-(--margin) py-4">
       <State state="Check" word="Not judged yet" />

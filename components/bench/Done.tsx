@@ -33,7 +33,7 @@ export function Done({ facts, timeZone }: { facts: BenchFacts; timeZone: string 
         <li>
           <Sentence>{`Changes it: ${done.changes_it[0]!.toLowerCase()}${done.changes_it.slice(1)}`}</Sentence>
         </li>
-        {done.read_again_at && <li>Read it again from <span className="fig">{at(done.read_again_at)}</span>.</li>}
+        {done.read_again_at && readings.length > 0 && <li>Read it again from <span className="fig">{at(done.read_again_at)}</span>.</li>}
       </ul>
       {readings.length > 0 && (
         <ul className="type-label mt-2 border-t border-rule" aria-label="Readings by hand">
@@ -48,7 +48,7 @@ export function Done({ facts, timeZone }: { facts: BenchFacts; timeZone: string 
       {strength && (
         <div className="type-label flex justify-between gap-3 pt-1">
           <span className="text-ink2">strength so far</span>
-          <span>
+          <span className="flex flex-col items-end">
             {strength.value.lo.toFixed(1)}–{strength.value.hi.toFixed(1)} % <How of="Strength so far" how={strength.how} />
           </span>
         </div>

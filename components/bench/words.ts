@@ -1,3 +1,4 @@
+import type { BenchFacts } from '@/lib/contracts/bench';
 import type { PrimingKind } from '@/lib/core/bottling/priming';
 import type { BottleKind } from '@/lib/core/bottling/bottles';
 import type { DoneVerdict, Explanation } from '@/lib/core/bottling/done';
@@ -37,6 +38,13 @@ export const EXPLAINED: Record<Explanation, string> = {
   tolerance: 'the yeast is at its tolerance',
   stabilised: 'stabilised',
 };
+
+/** Why strength and sugar are taken at their upper ends: what nobody has told. Null where they are reckoned from what was. */
+export function assumedWords({ for_gas, drink }: Pick<BenchFacts, 'for_gas' | 'drink'>): string | null {
+  if (!for_gas.assumed) return null;
+  const missing = drink.effective_og === null ? 'Nobody told the original gravity' : 'Nobody has read what stands in this vessel';
+  return `${missing}: strength and sugar are taken at the upper end of what they may be.`;
+}
 
 /** `0.5 L`, `330 ml` */
 export const sizeWords = (ml: number) => (ml >= 500 ? `${Number((ml / 1000).toFixed(3))} L` : `${ml} ml`);

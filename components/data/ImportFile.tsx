@@ -9,7 +9,7 @@ import { GroupBar } from '@/components/ui/Page';
 import { useAct } from '@/components/ui/use-act';
 import { ARCHIVE_LIMIT_BYTES, IMPORT_LIMIT_BYTES, type ImportPreviewBody } from '@/lib/contracts/imports';
 import { useBatches } from '@/lib/client/batches';
-import { keepFile, lookAtFile } from '@/lib/client/imports';
+import { keepFile, lookAtFile, useImports } from '@/lib/client/imports';
 import { ClientError } from '@/lib/client/fetcher';
 import { Preview, type Chosen } from './Preview';
 import { countWords } from './words';
@@ -42,7 +42,10 @@ export function ImportFile() {
   const [kind, setKind] = useState<Kind>('readings');
   const [looked, setLooked] = useState<Looked | null>(null);
   const [batch, setBatch] = useState('');
-  const [done, setDone] = useState<string | null>(null);
+  const [done, setDone] = useState<{ id: string; says: string } | null>(null);
+  const { imports } = useImports();
+  // What was taken out again is kept no more.
+  const kept = done !== null && !imports?.some(({ id, undone_at }) => id === done.id && undone_at !== null) ? done.says : null;
   const { busy, failed, fields, act } = useAct('The file was not read. Try again.');
   const input = useRef<HTMLInputElement>(null);
 
@@ -71,7 +74,7 @@ export function ImportFile() {
     const form = { ...formOf(kind, looked.file, choicesOf(looked.preview)), ...(kind === 'readings' && { batch_id: batch }) };
     await act(async () => {
       const kept = await keepFile(form as Parameters<typeof keepFile>[0]);
-      setDone(`Kept: ${countWords(kept.counts)}.`);
+      setDone({ id: kept.id, says: `Kept: ${countWords(kept.counts)}.` });
       setLooked(null);
     });
   }
@@ -98,7 +101,7 @@ export function ImportFile() {
           <input ref={input} type="file" accept={kind === 'archive' ? '.json,application/json' : '.csv,.tsv,.txt,text/csv'} disabled={busy} onChange={(event) => void choose(event.target.files)} className="font-mono text-[0.8125rem] text-ink file:mr-3 file:min-h-9 file:rounded file:border-[1.5px] file:border-ink file:bg-lit file:px-3 file:font-semibold" />
         </label>
         <span role="status" className="type-label text-ink">
-          {busy ? 'reading the file' : done}
+          {busy ? 'reading the file' : kept}
         </span>
       </div>
       {looked && (

@@ -17,7 +17,7 @@ export function AskHow({ of, answers, tight = false, className = '' }: { /** Wha
   const [open, setOpen] = useState(false);
   return (
     <>
-      <button type="button" onClick={() => setOpen(true)} className={`${HOW_LINK} text-ink2 decoration-rule2 ${tight ? 'min-h-0!' : ''} ${className}`}>
+      <button type="button" onClick={() => setOpen(true)} className={`${HOW_LINK} text-ink2 decoration-rule2 ${tight ? 'min-h-0! max-strip:after:-inset-y-[15px]!' : ''} ${className}`}>
         how?<span className="heard-only"> {of}</span>
       </button>
       {open && (

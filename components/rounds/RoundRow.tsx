@@ -99,7 +99,7 @@ export function RoundRow({ row, ticks, mayDo, me, now, timeZone }: RoundRowProps
           </p>
           <p className="text-[1.0625rem]/[1.375rem] font-[560]">
             {job.batch ? (
-              <Link href={`/batches/${job.batch.id}`} className="no-underline hover:underline">
+              <Link href={`/batches/${job.batch.id}`} className="relative no-underline hover:underline max-strip:after:absolute max-strip:after:inset-x-0 max-strip:after:-inset-y-3 max-strip:after:content-['']">
                 <Sentence>{job.title}</Sentence>
               </Link>
             ) : (

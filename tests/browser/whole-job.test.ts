@@ -2,7 +2,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Page } from 'playwright-core';
 import { Membership, Person, Place } from '@/db/models';
 import type { Role } from '@/lib/core/roles';
-import { expectAccessible, expectNoSidewaysScroll, useBrowser } from '../support/browser';
+import { expectAccessible, expectNoSidewaysScroll, tooLow, useBrowser } from '../support/browser';
 import { useDatabase } from '../support/database';
 import { buildCellar } from '../support/factories';
 import { startHouse, type House } from '../support/house';
@@ -158,10 +158,17 @@ describe('one batch, from the idea to the tasting note', () => {
     expect(labels.status()).toBe(200);
     expect((await labels.body()).subarray(0, 5).toString()).toBe('%PDF-');
 
-    // The preview is that file, drawn on the page: ink stands on its paper.
+    // The preview is that file, drawn on the page: ink stands on its paper. Until then the page says what it waits for.
+    let answer = () => {};
+    const asked = new Promise<void>((resolve) => (answer = resolve));
+    await page.route(/labels\.pdf/, async (route) => asked.then(() => route.continue()));
     await page.goto(`${house.web.url}/labels?lot=${at.lot}`);
+    await page.getByText(/^1 of 3: /).waitFor();
+    answer();
     const sheet = page.getByRole('img', { name: /sheet 1 of 1$/ });
     await sheet.waitFor();
+    await page.getByText(/^\d of 3: /).waitFor({ state: 'hidden' });
+    await page.unroute(/labels\.pdf/);
     await page.waitForFunction((canvas) => {
       const { data } = (canvas as HTMLCanvasElement).getContext('2d')!.getImageData(0, 0, (canvas as HTMLCanvasElement).width, (canvas as HTMLCanvasElement).height);
       return data.some((value, index) => index % 4 === 0 && value < 60 && data[index + 3]! > 200);
@@ -181,6 +188,9 @@ describe('one batch, from the idea to the tasting note', () => {
     await page.goto(at.share);
     await page.getByRole('heading', { level: 1, name: BATCH }).waitFor();
     expect(await page.getByText('Wren Holt').count()).toBe(0);
+    const asked = page.locator('button, summary').filter({ hasText: /^how\?/ });
+    expect(await asked.count()).toBeGreaterThan(3);
+    expect(await tooLow(asked)).toEqual([]);
     await page.getByLabel('score of 10').selectOption('8.5');
     await page.getByLabel('in your words').fill('Sharp, clean, gone too soon.');
     await page.getByLabel('next time').fill(NEXT_TIME);

@@ -1,4 +1,5 @@
 import { beforeEach, describe, expect, it } from 'vitest';
+import { assumedWords } from '@/components/bench/words';
 import { Batch, Lot } from '@/db/models';
 import type { Actor } from '@/lib/auth/policies';
 import { createEntry as entryForm, updateBatch as updateForm, updateEntry as entryUpdate } from '@/lib/contracts/batches';
@@ -63,9 +64,14 @@ describe('a split', () => {
     const finished = await ciderAt(brewer);
     const split = await part(finished, 2);
     expect(await stoppedAt(split.id, NOON)).toBe('unknown');
+    // What is missing is a reading: the original gravity went along.
+    expect(assumedWords(await getBench(brewer, split.id, clockAt()))).toMatch(/^Nobody has read what stands in this vessel/);
     const later = NOON + 9 * DAY;
     await readTwice(split.id, 1.0, later);
     expect((await judge(brewer, split.id, bottleForm({ at: isoAt(later) }), clockAt(later))).verdict).toBe('safe');
+    expect(assumedWords(await getBench(brewer, split.id, clockAt(later)))).toBeNull();
+    await Batch.update({ originalGravity: null }, { where: { id: split.id } });
+    expect(assumedWords(await getBench(brewer, split.id, clockAt(later)))).toMatch(/^Nobody told the original gravity/);
   });
 
   it('does not make an unfinished batch look dry by a low reading of the part: high is high', async () => {

@@ -1,5 +1,5 @@
 import { AxeBuilder } from '@axe-core/playwright';
-import { chromium, type Browser, type BrowserContext, type Page } from 'playwright-core';
+import { chromium, type Browser, type BrowserContext, type Locator, type Page } from 'playwright-core';
 import { afterAll, beforeAll, expect } from 'vitest';
 import { sessionCookie } from './web';
 
@@ -72,4 +72,21 @@ export async function expectAccessible(page: Page): Promise<void> {
 export async function expectNoSidewaysScroll(page: Page): Promise<void> {
   const { wide, view } = await page.evaluate(() => ({ wide: document.documentElement.scrollWidth, view: document.documentElement.clientWidth }));
   expect(wide).toBeLessThanOrEqual(view);
+}
+
+/** What of `shown` a thumb has less room for than 44 px from top to bottom, by what answers there; each is looked at in the middle of the screen. */
+export function tooLow(shown: Locator): Promise<string[]> {
+  return shown.evaluateAll((all) =>
+    all.flatMap((one) => {
+      one.scrollIntoView({ block: 'center' });
+      const box = one.getBoundingClientRect();
+      if (box.width === 0) return [];
+      const x = box.left + Math.min(box.width / 2, 14);
+      const answers = (y: number) => one.contains(document.elementFromPoint(x, y));
+      let [top, bottom] = [box.top + box.height / 2, box.top + box.height / 2];
+      while (answers(top - 1) && bottom - top < 100) top--;
+      while (answers(bottom + 1) && bottom - top < 100) bottom++;
+      return bottom - top < 43 ? [`${one.textContent?.trim()}: ${Math.round(bottom - top)} px`] : [];
+    }),
+  );
 }

@@ -39,7 +39,10 @@ export function bottleCall(scene: Scene): Call {
       changesIt: 'Changes it: a new level that holds.',
     });
   }
-  if (!watch.started.on) return call(scene.silentH === null ? 'unknown' : 'no', 'Not yet: it has not started.', 'All its sugar is still to come.', { evidence: figures });
+  if (!watch.started.on) {
+    // Unread is not unstarted: what was split off may have all but finished.
+    return scene.silentH === null ? call('unknown', 'Not yet: not seen working.', 'No reading yet.', { evidence: figures }) : call('no', 'Not yet: it has not started.', 'All its sugar is still to come.', { evidence: figures });
+  }
   if (watch.frozen || scene.silent || level === null) {
     return call('unknown', 'Not known whether it has stopped.', 'The sensor gives nothing to go by.', {
       evidence: figures,

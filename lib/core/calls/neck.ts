@@ -40,7 +40,7 @@ export function neckCall(scene: Scene): Call {
     });
   }
   if (!watch.started.on) {
-    return call(scene.silentH === null ? 'unknown' : 'no', 'Leave the tube on.', 'Not working yet; the strong gas is still to come.', { evidence: figures, changesIt });
+    return call(scene.silentH === null ? 'unknown' : 'no', 'Leave the tube on.', scene.silentH === null ? 'Not seen working; the strong gas may still come.' : 'Not working yet; the strong gas is still to come.', { evidence: figures, changesIt });
   }
   if (!gas || scene.silent || watch.frozen) {
     return call('unknown', 'Leave the tube on.', 'The gas is not known while the sensor gives nothing to go by.', { act: 'Look at the foam before you swap.', changesIt });

@@ -12,7 +12,7 @@ export function rackCall(scene: Scene): Call {
   const top = watch.zoneTop();
   const figures = level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG'), ...(rate ? [evidence('fall', Math.max(0, rate.value), RACK_PACE, 'points/d')] : [])];
   const changesIt = `Changes it: ${gravityWords(top)} or less and about 2 points still to come.`;
-  if (!watch.started.on) return call(scene.silentH === null ? 'unknown' : 'no', 'Not yet: it has not started.', 'Racking comes at the end of the fall.', { changesIt });
+  if (!watch.started.on) return call(scene.silentH === null ? 'unknown' : 'no', scene.silentH === null ? 'Not yet: not seen working.' : 'Not yet: it has not started.', 'Racking comes at the end of the fall.', { changesIt });
   const blind = watch.frozen !== null || scene.silent || level === null;
   if (watch.rack.on) {
     const since = sinceOf(scene, watch.rack.since);

@@ -7,7 +7,7 @@ import { call, evidence, gravityWords, pointsWords, rateWords, spanWords, streng
 export function stalledCall(scene: Scene): Call {
   const { watch, hour, level, rate } = scene;
   const top = watch.zoneTop();
-  if (!watch.started.on) return call(scene.silentH === null ? 'unknown' : 'no', 'Not started, so not stalled.', 'The start comes first.');
+  if (!watch.started.on) return call(scene.silentH === null ? 'unknown' : 'no', scene.silentH === null ? 'Not seen working, so not stalled.' : 'Not started, so not stalled.', 'The start comes first.');
   if (watch.frozen || scene.silent || level === null) {
     const since = scene.silentH === null ? '' : `Sensor ${watch.frozen ? 'stuck' : `silent ${spanWords(scene.silentH)}`}.`;
     return call('unknown', 'Not known whether it still falls.', since || 'No reading yet.', {

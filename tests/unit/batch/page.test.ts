@@ -20,7 +20,16 @@ describe('the line of facts', () => {
 
   it('says what is not known instead of leaving a guess', () => {
     const none = { assessment: null, original_gravity: null, sensor: null, pitched_at: null };
-    expect(factsOf(batch(none), null, NOW, 'UTC').map((item) => item.figure)).toEqual(['not yet', 'not told', 'not known', 'not known', '–', '–', 'not known', 'none']);
+    expect(factsOf(batch(none), null, NOW, 'UTC').map((item) => item.figure)).toEqual(['not yet', 'not told', 'not read', 'not known', '–', '–', 'not known', 'none']);
+  });
+
+  it('says nothing yet of what is still on its way', () => {
+    const none = { assessment: null };
+    const arriving = (...given: Parameters<typeof factsOf>) => factsOf(...given).filter((item) => item.arriving).map(({ name, figure }) => `${name} ${figure}`);
+    expect(arriving(batch({ assessment: judged({}, { gravity: null }) }), undefined, NOW, 'UTC')).toEqual(['now –']);
+    expect(arriving(batch(none), null, NOW, 'UTC', [], true)).toEqual(['now –', 'bed –', 'likely end –']);
+    expect(arriving(batch(none), null, NOW, 'UTC')).toEqual([]);
+    expect(arriving(batch(), undefined, NOW, 'UTC')).toEqual([]);
   });
 
   it('gives the last reading its time where nothing is known of now', () => {

@@ -41,6 +41,15 @@ describe('the calls', () => {
     expect(started.since).toBeGreaterThan(PITCH);
   });
 
+  it('do not say of what nobody has read that it has not begun', () => {
+    const { bottle, rack, stalled } = at(7, [], { neck: 'airlock' }).calls;
+    for (const { verdict, headline, reason } of [bottle, rack, stalled]) {
+      expect(verdict).toBe('unknown');
+      expect(`${headline} ${reason}`).not.toMatch(/not started|still to come\.$/i);
+    }
+    expect(at(1, record(1, () => 55)).calls.bottle).toMatchObject({ verdict: 'no', headline: 'Not yet: it has not started.' });
+  });
+
   it('say that a start is overdue after three days of nothing', () => {
     const { started } = at(4, record(4, () => 55)).calls;
     expect(started).toMatchObject({ verdict: 'hold', kind: 'overdue' });
