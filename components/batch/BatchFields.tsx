@@ -28,8 +28,8 @@ interface BatchFieldsProps {
 
 function Group({ title, note, children }: { title: string; note?: ReactNode; children: ReactNode }) {
   return (
-    <fieldset className="border-t pt-3">
-      <legend className="type-name float-left w-full pb-1">{title}</legend>
+    <fieldset className="border-t pt-3 first:border-t-0 first:pt-0">
+      <legend className="type-name float-left w-full pb-2">{title}</legend>
       {note && <p className="type-reason clear-left max-w-[60ch] pb-2 text-ink2">{note}</p>}
       <div className="clear-left grid grid-cols-2 gap-x-3 gap-y-4">{children}</div>
     </fieldset>

@@ -85,8 +85,8 @@ function NewBatchForm({ timeZone, now, proposal, gravity }: { timeZone: string; 
   return (
     <>
       <PageHead title="Start a batch" meta={proposal ? 'From its must sheet; the batch keeps this version.' : 'Everything but the name, the kind and the volumes can be told later.'} />
-      <div className="mx-auto grid max-w-[1000px] gap-8 px-(--margin) py-5 wide:grid-cols-[minmax(0,600px)_1fr]">
-        <form onSubmit={(event) => void send(event)} noValidate className="flex flex-col gap-5">
+      <div className="wide:grid wide:min-h-[calc(100dvh-var(--header)-56px)] wide:grid-cols-[minmax(0,1fr)_424px]">
+        <form onSubmit={(event) => void send(event)} noValidate className="flex max-w-[860px] flex-col gap-5 px-(--margin) py-4">
           {proposal && (
             <p className="type-body border-l-[3px] border-rule2 pl-3">
               <Sentence>{`Promised ${proposal.expected_original_gravity.value.lo.toFixed(3)} to ${proposal.expected_original_gravity.value.hi.toFixed(3)}. Write the gravity as you read it.`}</Sentence>
@@ -112,8 +112,8 @@ function NewBatchForm({ timeZone, now, proposal, gravity }: { timeZone: string; 
             </Button>
           </div>
         </form>
-        <aside className="hidden wide:block">
-          <div className="sticky top-6 flex flex-col items-center gap-3 border-l py-6">
+        <aside className="hidden border-l bg-desk wide:block">
+          <div className="sticky top-0 flex flex-col items-center gap-3 px-(--margin) py-8">
             <Vessel
               silentPicture
               height={170}

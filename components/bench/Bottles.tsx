@@ -45,7 +45,7 @@ function Row({ row, index, drops, errors, onChange, onRemove }: RowProps) {
           ))}
         </datalist>
         <Field label="at hand" placeholder="enough" inputMode="numeric" value={row.atHand} error={error('at_hand')} onChange={(event) => set({ atHand: event.target.value })} />
-        <Select label="closed by" value={row.closure} error={error('closure')} onChange={(event) => set({ closure: event.target.value as Closure })}>
+        <Select label="closed by" className="max-strip:col-span-2" value={row.closure} error={error('closure')} onChange={(event) => set({ closure: event.target.value as Closure })}>
           {entry.closures.map((closure) => (
             <option key={closure} value={closure}>
               {CLOSURE_CATALOGUE[closure].name}

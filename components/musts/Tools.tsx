@@ -98,7 +98,7 @@ export function Tools({ draft, onChange }: { draft: SheetDraft; onChange: (draft
   };
   if (draft.lines.length === 0) return null;
   return (
-    <section aria-labelledby="tools" className="border-t-[1.5px] border-ink pt-3">
+    <section aria-labelledby="tools" className="mt-6 border-t-[1.5px] border-ink pt-3">
       <h2 id="tools" className="type-sub">
         Change the amounts
       </h2>

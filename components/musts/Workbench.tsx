@@ -17,7 +17,7 @@ export function Workbench({ draft, errors, onChange, children }: { draft: SheetD
     return { result: reckonMust(coreSheet(read.body)), body: read.body, missing: settled.lines.length - read.body.lines.length };
   }, [settled]);
   return (
-    <div className="not-printed wide:grid wide:grid-cols-[minmax(0,1fr)_424px]">
+    <div className="not-printed wide:grid wide:min-h-[calc(100dvh-var(--header)-56px)] wide:grid-cols-[minmax(0,1fr)_424px]">
       <Glance result={result} at={promise} />
       <div className="px-(--margin) py-4">
         <SheetEditor draft={draft} errors={errors} onChange={onChange} />

@@ -14,6 +14,7 @@ import { fitCalibration, type Degree, type FitOutcome } from '@/lib/core/calibra
 import { CalibrationChart } from './CalibrationChart';
 import { CalibrationPoints, type ChosenPoint } from './CalibrationPoints';
 import { Candidates } from './Candidates';
+import { CURVE_WORDS } from './words';
 import { KeepFit } from './KeepFit';
 import { OwnOffset, Suggested } from './OffsetPanel';
 import { PointForm } from './PointForm';
@@ -44,7 +45,7 @@ function Verdict({ outcome }: { outcome: FitOutcome }) {
         <Sentence strong>{`Right to ${right} points anywhere from ${fit.gravityLow.toFixed(3)} to ${fit.gravityHigh.toFixed(3)}`}</Sentence>
       </p>
       <p className="type-body text-ink2">
-        <Sentence>{`19 in 20, by ${fit.points.length} points and a curve of degree ${fit.degree}. ${trusted ? 'A reading by hand more than 2 points off would ask for a new fit.' : 'More points, spread evenly, make it surer.'}`}</Sentence>
+        <Sentence>{`19 in 20, from ${fit.points.length} liquids of known gravity, on ${CURVE_WORDS[fit.degree]}. ${trusted ? 'A reading by hand more than 2 points off would ask for a new fit.' : 'More points, spread evenly, make it surer.'}`}</Sentence>
       </p>
     </>
   );

@@ -26,7 +26,7 @@ export function CalibrationPoints({ points, fit, mayChange, onUse, onRemove }: {
         <tr className="type-label border-b-[1.5px] border-ink text-left text-ink2">
           <th className="py-1.5 pl-(--margin) font-medium">in</th>
           <th className="py-1.5 pl-3 text-right font-medium">known</th>
-          <th className="py-1.5 pl-3 text-right font-medium">leans</th>
+          <th className="py-1.5 pl-3 text-right font-medium max-strip:hidden">leans</th>
           <th className="py-1.5 pl-3 text-right font-medium max-strip:hidden">at</th>
           <th className="py-1.5 pl-3 text-right font-medium">left over</th>
           <th className="py-1.5 pl-3 text-right font-medium max-strip:hidden">without it</th>
@@ -47,22 +47,23 @@ export function CalibrationPoints({ points, fit, mayChange, onUse, onRemove }: {
                   <span className="min-w-0">
                     {SOURCE[point.source]}
                     {point.sugar_g_per_l !== null && ` ${Math.round(point.sugar_g_per_l)} g/L`}
+                    <span className="type-label block text-ink2 strip:hidden">
+                      leans {point.inclination.toFixed(1)}°{result?.missedBy != null && `, without it ${signedPoints(result.missedBy)}`}
+                    </span>
                     {pulling && <span className="type-label block text-ochre">the curve hangs on it</span>}
                   </span>
                 </span>
               </td>
               <td className="whitespace-nowrap py-1.5 pl-3 text-right font-semibold">{gravityText(point.gravity)}</td>
-              <td className="whitespace-nowrap py-1.5 pl-3 text-right">{point.inclination.toFixed(1)}°</td>
+              <td className="whitespace-nowrap py-1.5 pl-3 text-right max-strip:hidden">{point.inclination.toFixed(1)}°</td>
               <td className="whitespace-nowrap py-1.5 pl-3 text-right max-strip:hidden">{temperatureText(point.temperature, 0)}</td>
-              <td className="whitespace-nowrap py-1.5 pl-3 text-right">
-                {result ? signedPoints(result.leftOver) : '–'}
-                {result?.missedBy != null && <span className="type-label block text-ink2 strip:hidden">without it {signedPoints(result.missedBy)}</span>}
-              </td>
+              <td className="whitespace-nowrap py-1.5 pl-3 text-right">{result ? signedPoints(result.leftOver) : '–'}</td>
               <td className="whitespace-nowrap py-1.5 pl-3 text-right text-ink2 max-strip:hidden">{result?.missedBy == null ? '–' : signedPoints(result.missedBy)}</td>
               <td className="py-1 pl-3 pr-(--margin) text-right">
                 {mayChange && (
                   <Button size="lane" look="quiet" aria-label={`Strike out ${gravityText(point.gravity)} at ${point.inclination.toFixed(1)} degrees`} onClick={() => onRemove(point.id)}>
-                    ×
+                    <span className="strip:hidden">×</span>
+                    <span className="max-strip:hidden">Strike out</span>
                   </Button>
                 )}
               </td>

@@ -47,8 +47,8 @@ export function KeepFit({ sensor, points, outcome, degree, onDegree, corrects, o
     <div className="flex flex-col gap-3 border-b bg-desk px-(--margin) py-4">
       {failed && <FormError>{failed}</FormError>}
       <div className="flex flex-wrap items-end gap-x-4 gap-y-3">
-        <Choice label="curve" value={String(degree) as '1' | '2' | '3'} onChoose={(value) => onDegree(Number(value) as Degree)} options={DEGREES.map((value) => ({ value: String(value) as '1' | '2' | '3', name: NAMES[value] }))} className="min-w-[280px]" />
-        <Field label="applies from" type="datetime-local" value={shown} onChange={(event) => setFrom(event.target.value)} error={fields.applies_from} className="w-56" />
+        <Choice label="curve" value={String(degree) as '1' | '2' | '3'} onChoose={(value) => onDegree(Number(value) as Degree)} options={DEGREES.map((value) => ({ value: String(value) as '1' | '2' | '3', name: NAMES[value] }))} className="w-full strip:w-[330px]" />
+        <Field label="applies from" type="datetime-local" value={shown} onChange={(event) => setFrom(event.target.value)} error={fields.applies_from} className="w-full strip:w-60" />
       </div>
       <Box ticked={corrects} onTick={onCorrects}>
         <span className="type-body">Take out how the liquid swells with warmth, by the temperature of each reading.</span>

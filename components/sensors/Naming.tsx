@@ -8,7 +8,7 @@ import { updateSensor as updateSensorSchema, type SensorBody } from '@/lib/contr
 import { IntervalOptions } from './Intervals';
 import { useSensorChange } from './Placement';
 
-/** Its name, and how often it is set to speak. */
+/** Its name, and how often it is expected to speak: silence is measured by it. */
 export function Naming({ sensor }: { sensor: SensorBody }) {
   const { busy, failed, change } = useSensorChange(sensor.id);
   const [error, setError] = useState<string | undefined>();
@@ -29,7 +29,7 @@ export function Naming({ sensor }: { sensor: SensorBody }) {
       <div className="flex flex-wrap items-start gap-3">
         {/* Anew where it was changed elsewhere: a sensor that confirms its settings would be set back. */}
         <Field key={sensor.name} label="name" name="name" defaultValue={sensor.name} maxLength={60} autoComplete="off" error={error} className="min-w-40 flex-1" />
-        <Select key={sensor.interval_s} label="speaks every" name="interval_s" defaultValue={sensor.interval_s} className="w-32">
+        <Select key={sensor.interval_s} label="expected every" name="interval_s" defaultValue={sensor.interval_s} className="w-32">
           <IntervalOptions given={sensor.interval_s} />
         </Select>
       </div>

@@ -119,7 +119,7 @@ export function Placement({ sensor, mayAssign, timeZone, now }: { sensor: Sensor
               </option>
             ))}
           </Select>
-          <Field label="since" type="datetime-local" value={since} max={now > 0 ? toLocalInput(now * 1000, timeZone) : undefined} onChange={(event) => setSince(event.target.value)} hint="left empty: now" className="w-52" />
+          <Field label="since" type="datetime-local" value={since} max={now > 0 ? toLocalInput(now * 1000, timeZone) : undefined} onChange={(event) => setSince(event.target.value)} hint="left empty: now" className="w-full strip:w-60" />
           <Button disabled={busy || chosen === ''} onClick={() => void change({ batch_id: chosen, ...at() }).then(done)} className="mb-[22px]">
             {sensor.batch ? 'Move it' : 'Put it in'}
           </Button>

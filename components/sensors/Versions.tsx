@@ -8,13 +8,14 @@ import { GroupBar } from '@/components/ui/Page';
 import type { CalibrationVersionBody } from '@/lib/contracts/calibration';
 import { takeBackCalibration } from '@/lib/client/calibration';
 import { useAct } from '@/components/ui/use-act';
-import { signedPoints } from './words';
+import type { Degree } from '@/lib/core/calibration/calibrate';
+import { CURVE_WORDS, signedPoints } from './words';
 
 function whatItIs(version: CalibrationVersionBody): string {
   const { curve, offset } = version;
   const moved = offset === 0 ? '' : `moved by ${signedPoints(offset)} points`;
   if (!curve) return moved || 'as it is sent';
-  return [`curve of degree ${curve.degree} by ${curve.points.length} points, ${curve.low.toFixed(0)}–${curve.high.toFixed(0)}°`, moved].filter(Boolean).join(', ');
+  return [`${CURVE_WORDS[curve.degree as Degree]} through ${curve.points.length} liquids of known gravity, ${curve.low.toFixed(0)}–${curve.high.toFixed(0)}°`, moved].filter(Boolean).join(', ');
 }
 
 /** Every calibration there was, newest first; one that is taken back stays readable. */

@@ -1,7 +1,11 @@
 import { duration, when } from '@/components/charts/zone';
 import { gravityText, temperatureText } from '@/components/ui/units';
 import type { SensorBody, SensorHealthList, SensorKindName, SensorLimits } from '@/lib/contracts/sensors';
+import type { Degree } from '@/lib/core/calibration/calibrate';
 import type { StateWord } from '@/lib/core/calls/attention';
+
+/** A calibration's curve by its degree. */
+export const CURVE_WORDS: Record<Degree, string> = { 1: 'a straight line', 2: 'a line bent once', 3: 'a line bent twice' };
 
 const HOUR = 3_600;
 

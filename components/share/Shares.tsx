@@ -44,7 +44,7 @@ export function Shares({ batchId, day }: { batchId: string; day: (at: string) =>
               <p className="type-label text-ink2">{share.revoked_at ? 'revoked' : 'expired'}</p>
             )}
             <div className="type-label flex flex-wrap items-center gap-x-4 text-ink2">
-              <span>
+              <span className="w-full">
                 until {day(share.expires_at)}, {lookedWords(share.looked_at)}
               </span>
               {share.open && share.url && (

@@ -19,6 +19,7 @@ export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; ti
   const { me } = useMe();
   const { tastings, summary, error, retry } = useTastings(lotId);
   const [open, setOpen] = useState(false);
+  const found = (Object.entries(summary?.sparkle ?? {}) as [Found, number][]).filter(([, count]) => count > 0);
   return (
     <section aria-label="Tasting notes">
       <GroupBar word="Tasting notes" note={tastings && `${tastings.length}`} />
@@ -45,12 +46,12 @@ export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; ti
                   <dd className="inline text-ink">{spreadWords(summary[aspect], 5)}</dd>
                 </div>
               ))}
-              {(Object.entries(summary.sparkle) as [Found, number][]).filter(([, count]) => count > 0).map(([found, count]) => (
-                <div key={found}>
-                  <dt className="inline">{FOUND_WORDS[found]} </dt>
-                  <dd className="inline text-ink">{count}</dd>
+              {found.length > 0 && (
+                <div>
+                  <dt className="inline">sparkle </dt>
+                  <dd className="inline text-ink">{found.map(([word, count]) => `${FOUND_WORDS[word]} ${count}`).join(', ')}</dd>
                 </div>
-              ))}
+              )}
             </dl>}
           </div>
           <ul>
@@ -69,15 +70,17 @@ export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; ti
                     </span>
                   ))}
                   {tasting.sparkle && <span>{FOUND_WORDS[tasting.sparkle]}</span>}
-                  {tasting.mine && (
-                    <button type="button" onClick={() => void removeTasting(tasting.id)} className="ml-auto min-h-8 underline underline-offset-4 max-strip:min-h-11">
-                      Take back
-                    </button>
-                  )}
                 </p>
                 {tasting.words && <p className="type-body break-words">{tasting.words}</p>}
                 {tasting.next_time && <p className="type-reason break-words text-ink2">Next time: {tasting.next_time}</p>}
-                <Photos place={{ lot: lotId }} on={{ tasting: tasting.id }} own={tasting.by.id !== null && tasting.by.id === me?.person.id} />
+                <div className="flex flex-wrap items-end justify-between gap-x-4">
+                  <Photos place={{ lot: lotId }} on={{ tasting: tasting.id }} own={tasting.by.id !== null && tasting.by.id === me?.person.id} />
+                  {tasting.mine && (
+                    <button type="button" onClick={() => void removeTasting(tasting.id)} className="type-label ml-auto min-h-8 text-ink2 underline underline-offset-4 max-strip:min-h-11">
+                      Take back
+                    </button>
+                  )}
+                </div>
               </li>
             ))}
           </ul>
