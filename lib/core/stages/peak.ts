@@ -1,6 +1,6 @@
 import { gasLPerH } from '../gas/gas';
 import { Intake } from './intake';
-import { hold } from './latch';
+import { hold, never } from './latch';
 
 /** Thermal days past the steepest place of the curve at which the peak is over by the curve alone, and at which it is where the record agrees (own simulations). */
 export const CURVE_PAST_DAYS = 0.4;
@@ -54,7 +54,7 @@ export class Peak extends Intake {
     // Where the record is plain the curve is not asked: a late start can put its turn too late.
     const seen = plain || (passed === null ? below : passed > CURVE_PAST_DAYS || (below && passed > LINE_PAST_DAYS));
     // A drift or the first small fall has no peak; what was stabilised at rest has had its own.
-    hold(this.peaked, hour, (seen && this.progress() >= 0.12) || this.sweetHeld(), 2, false);
+    hold(this.peaked, hour, () => (seen && this.progress() >= 0.12) || this.sweetHeld(), 2, never);
   }
 
   /** Thermal days since the steepest place of the fitted curve; null without a curve, or where it says that hardly anything has fallen. */
@@ -93,16 +93,18 @@ export class Peak extends Intake {
       upper = Math.min(upper, gasLPerH(-line.slope + 1.15 * line.se, this.setup.volumeL));
       if (window === 12 || lower === Number.NEGATIVE_INFINITY) lower = gasLPerH(-line.slope - 1.64 * line.se, this.setup.volumeL);
     }
+    const limit = this.swapGas();
     // A float that is stuck or silent leaves what it told before.
     const blind = this.frozen !== null || upper === Number.POSITIVE_INFINITY;
-    const limit = this.swapGas();
-    if (blind) upper = CURVE_GAS_ROOM * this.gasByCurve();
-    // A day's line can fall behind a fermentation that warms itself: the curve must not say much more.
-    else if (!this.airlock.on && this.curveGas() > CURVE_GAS_SLACK * limit) upper = limit;
     // A cold vessel with sugar left is quiet only until somebody warms it.
     const waiting = this.lastCold !== null && hour - this.lastCold < WARMING_H && this.gasIfWarmed() > limit;
     // Fresh sugar is not at its strongest at once, and yeast that had come to rest wakes slowly.
     const settled = this.quietSinceAddition(this.sweetened ? 72 : 24, 72);
-    hold(this.airlock, hour, upper < limit && settled && !waiting, 3, lower > 1.3 * limit || waiting);
+    hold(this.airlock, hour, () => settled && !waiting && (blind ? CURVE_GAS_ROOM * this.gasByCurve() < limit : upper < limit && this.curveAgrees(limit)), 3, () => waiting || lower > 1.3 * limit);
+  }
+
+  /** A day's line can fall behind a fermentation that warms itself: the curve must not say much more. */
+  private curveAgrees(limit: number): boolean {
+    return this.airlock.on || this.curveGas() <= CURVE_GAS_SLACK * limit;
   }
 }

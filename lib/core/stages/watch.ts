@@ -2,7 +2,7 @@ import type { BatchSetup, Reading } from '../types';
 import { VOLUMES_PER_POINT } from '../gas/gas';
 import type { Line } from '../series/line';
 import { CURVE_PAST_DAYS, Peak } from './peak';
-import { clear, hold } from './latch';
+import { clear, hold, never } from './latch';
 import { BOTTLE_POINTS } from './remaining';
 
 export { LOOK_H } from './intake';
@@ -78,11 +78,11 @@ export class Watch extends Peak {
     }
     if (this.started.on && !this.rack.on && this.isBlind()) this.judgeRackBlind(hour);
     const day = this.line(48);
-    hold(this.rising, hour, day !== null && day.slope - 1.64 * day.se > 0.25, 2, day !== null && day.slope - 1.64 * day.se <= 0);
-    const settled = this.quietSinceAddition(48, 240);
-    hold(this.drifting, hour, settled && !this.segment.fruit && hour > 96 && ((this.rising.on && !this.stuck.on) || (day !== null && day.slope > 0 && this.climbs(168))), 8, !this.rising.on && !this.climbsStill());
+    hold(this.rising, hour, () => day !== null && day.slope - 1.64 * day.se > 0.25, 2, () => day !== null && day.slope - 1.64 * day.se <= 0);
+    const mayDrift = this.quietSinceAddition(48, 240) && !this.segment.fruit && hour > 96;
+    hold(this.drifting, hour, () => mayDrift && ((this.rising.on && !this.stuck.on) || (day !== null && day.slope > 0 && this.climbs(168))), 8, () => !this.rising.on && !this.climbsStill());
     if (this.lastHand && Math.abs(this.lastHand.miss) > 4 && hour - this.lastHand.hour < 168 && this.lastHand.hour > 12) {
-      hold(this.drifting, hour, true, 1, false);
+      hold(this.drifting, hour, () => true, 1, never);
     }
     this.restLevel = this.bottle.on ? this.track.level(hour - 6, hour) : null;
   }
@@ -107,8 +107,8 @@ export class Watch extends Peak {
     // A float put in late, or silent at first, may find the fall well on its way.
     const late = this.og !== null && this.ogTold && this.og - now > (first > 12 ? 5 : 8);
     const falling = line !== null && line.slope + 0.8 * line.se < 0;
-    hold(this.started, hour, (fall > limit && falling) || late, fall > Math.max(5, 5 * this.noise) ? 1 : 2, false);
-    hold(this.overdue, hour, hour >= OVERDUE_H[this.setup.kind] && fall < 2.5 && !this.started.on, 1, this.started.on);
+    hold(this.started, hour, () => (fall > limit && falling) || late, fall > Math.max(5, 5 * this.noise) ? 1 : 2, never);
+    hold(this.overdue, hour, () => hour >= OVERDUE_H[this.setup.kind] && fall < 2.5 && !this.started.on, 1, () => this.started.on);
   }
 
   private noteLowest(): void {
@@ -131,39 +131,44 @@ export class Watch extends Peak {
     const near = ground !== null && (ground <= this.stuckFloor() || this.sweetHeld()) && this.peaked.on;
     // The tail is only asked where the fall is slow enough for it to matter.
     const ceiling = this.bottle.on ? Number.POSITIVE_INFINITY : this.terminal.on ? BOTTLE_PACE : TERMINAL_PACE;
-    const slow = (inside || (near && !this.coldNow())) && upper48 !== null && upper48 < ceiling;
-    const left = slow ? this.remainingNow() : null;
-    const most = left && left.most;
+    const slow = upper48 !== null && upper48 < ceiling && (inside || (near && !this.coldNow()));
 
     const sugary = level !== null && this.sweetStill(level);
-    const done = most !== null && most < TERMINAL_POINTS && upper48! < TERMINAL_PACE && this.quietSinceAddition(60, 120) && !sugary;
     const wasDone = this.terminal.on;
-    hold(this.terminal, hour, done, 1, (lower48 !== null && lower48 > 0.8) || this.refermenting.on);
+    hold(this.terminal, hour, () => slow && upper48 < TERMINAL_PACE && !sugary && this.quietSinceAddition(60, 120) && this.leavesLess(TERMINAL_POINTS), 1, () => (lower48 !== null && lower48 > 0.8) || this.refermenting.on);
     if (this.terminal.on && !wasDone) this.plateau = level;
 
-    if (this.terminal.on) hold(this.rack, hour, true, 2, false);
+    if (this.terminal.on) hold(this.rack, hour, () => true, 2, never);
     else if (!this.isBlind()) {
       const line12 = this.line(12) ?? line24;
-      const paces = [line12, line24].flatMap((line) => (line ? [-line.slope] : []));
-      const asked = near && !sugary && this.quietSinceAddition(60, 120) && Math.min(...paces) < RACK_PACE;
-      const left = asked ? this.leftOnCurve() : null;
-      hold(this.rack, hour, left !== null && left.most < RACK_POINTS, 2, line12 !== null && -line12.slope - 1.64 * line12.se > RACK_PACE);
+      const pace = Math.min(...[line12, line24].map((line) => (line ? -line.slope : Number.POSITIVE_INFINITY)));
+      const asked = near && !sugary && pace < RACK_PACE && this.quietSinceAddition(60, 120);
+      hold(this.rack, hour, () => asked && (this.leftOnCurve()?.most ?? Number.POSITIVE_INFINITY) < RACK_POINTS, 2, () => line12 !== null && -line12.slope - 1.64 * line12.se > RACK_PACE);
     }
 
-    // Both ends must say so: the shorter sees a late fall, the longer is seldom deceived.
-    const rest = most !== null && most < BOTTLE_POINTS && inside && this.tail() && upper48! < BOTTLE_PACE && this.threeQuietDays() ? this.longTail() : null;
-    const still =
-      rest !== null &&
-      level !== null &&
-      this.againstRange(level, rest).most < BOTTLE_POINTS &&
-      !this.rising.on &&
-      !this.refermenting.on &&
-      !sugary &&
-      !this.mayOnlyBeCold() &&
-      this.quietSinceAddition(120, 168);
+    const still = slow && inside && upper48 < BOTTLE_PACE && !this.rising.on && !this.refermenting.on && !sugary && this.quietSinceAddition(120, 168);
     // A steady small fall shows in what it leaves to come, a whole volume of gas, before two days of it are beyond doubt.
-    const more = most !== null && most * VOLUMES_PER_POINT >= 1;
-    hold(this.bottle, hour, still, 2, more || (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on);
+    const less = 1 / VOLUMES_PER_POINT;
+    hold(
+      this.bottle,
+      hour,
+      () => still && !this.mayOnlyBeCold() && this.threeQuietDays() && this.leavesLess(BOTTLE_POINTS) && this.bothEndsSaySo(),
+      2,
+      () => (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on || (slow && this.remainingNow() !== null && !this.leavesLess(less)),
+    );
+  }
+
+  /** Less than so many points may still come, nine times in ten. */
+  private leavesLess(points: number): boolean {
+    const left = this.remainingNow();
+    return left !== null && left.most < points;
+  }
+
+  /** Little is left by the shorter end of the record, which sees a late fall, and by the longer, which is seldom deceived. */
+  private bothEndsSaySo(): boolean {
+    const level = this.levelNow();
+    const long = this.tail() && this.longTail();
+    return level !== null && long !== null && this.againstRange(level, long).most < BOTTLE_POINTS;
   }
 
   /** The float is stuck or silent. */
@@ -180,7 +185,7 @@ export class Watch extends Peak {
     const last = this.track.tauAt(this.track.lastSound(hour)) - from;
     const now = this.track.tauAt(hour) - from;
     const left = (fit.curve.og - fit.curve.fg) * fit.curve.share(last + (now - last) / 2);
-    hold(this.rack, hour, left < RACK_BLIND_POINTS && this.quietSinceAddition(60, 120), 2, false);
+    hold(this.rack, hour, () => left < RACK_BLIND_POINTS && this.quietSinceAddition(60, 120), 2, never);
   }
 
   /** Three days (two, where there are no more) that hardly fall, and surely do not fall fast. */
@@ -209,39 +214,62 @@ export class Watch extends Peak {
     }
     const level = this.groundLevel();
     if (level === null) return;
-    const prior = this.fgPrior();
     const limit = this.stuckFloor();
-    const line48 = this.line(48);
-    const settled = this.quietSinceAddition(60, 120);
-    const flat =
-      level > limit &&
-      settled &&
-      (slowerThan(line48, 0.5, 0.75) || slowerThan(this.line(72), 0.35, 0.5)) &&
-      (hour - (this.started.since ?? hour) > 96 || this.progress(level) > 0.12);
-    const climbs = (): boolean => this.drifting.on || this.climbs(72) || this.climbs(168);
-    const falls = (window: number, sure: number): boolean => {
-      const line = this.line(window);
-      return line !== null && -line.slope - sure * line.se > 1;
-    };
     // A few hours are soon deceived by noise: they must say so twice.
-    this.stirs = this.stuck.on && falls(8, 2.5) ? this.stirs + 1 : 0;
-    const moving = this.stuck.on && (falls(24, 1.64) || this.stirs > 1) && this.belowStall(level);
+    this.stirs = this.stuck.on && this.falls(8, 2.5) ? this.stirs + 1 : 0;
+    const settled = this.quietSinceAddition(60, 120);
     // A few days' climb keeps from calling it stuck, but only a float that has drifted takes it back: about a level that stands a float swings.
-    hold(this.stuck, hour, flat && !climbs(), 3, moving || level < limit - STUCK_BAND || this.drifting.on);
+    hold(
+      this.stuck,
+      hour,
+      () => level > limit && settled && this.liesFlat(level) && !this.mayClimb(),
+      3,
+      () => level < limit - STUCK_BAND || this.drifting.on || ((this.falls(24, 1.64) || this.stirs > 1) && this.belowStall(level)),
+    );
     if (this.stuck.on) this.stuckCold = this.coldNow();
 
+    const line48 = this.line(48);
     const rate = line48 ? -line48.slope : null;
-    let crawling = false;
-    const slow = hour > 48 && line48 !== null && rate !== null && rate + line48.se < 2.2 && !this.stuck.on && !this.drifting.on && this.quietSinceAddition(60, 96) && !this.quickens();
-    // What is left by the yeast's range, or by the curve where that says more. What has come to its end has said so already.
-    const asked = this.peaked.on && rate !== null && (slow || (this.sluggish.on && !this.stuck.on));
-    const left = asked ? Math.max(level - prior.mean, this.terminal.on ? 0 : CURVE_SURE * (this.leftOnCurve()?.value ?? 0)) : 0;
-    if (slow && left > 7.5 && !climbs()) {
-      const end = this.hoursToEnd();
-      const fg = this.expectedFg();
-      crawling = (end !== null && end > 130) || left > 6 * Math.max(rate, 0.3) || (fg !== null && fg > this.zoneTop());
-    }
-    hold(this.sluggish, hour, crawling, 3, (rate !== null && rate > 2.6) || left < 5 || this.stuck.on || this.drifting.on);
+    const slow = hour > 48 && line48 !== null && -line48.slope + line48.se < 2.2 && !this.stuck.on && !this.drifting.on && this.peaked.on;
+    hold(
+      this.sluggish,
+      hour,
+      () => slow && this.quietSinceAddition(60, 96) && !this.quickens() && this.leavesAtLeast(7.5, level) && this.crawls(-line48.slope, level) && !this.mayClimb(),
+      3,
+      () => rate === null || rate > 2.6 || !this.peaked.on || this.stuck.on || this.drifting.on || !this.leavesAtLeast(5, level),
+    );
+  }
+
+  /** Two or three days that hardly fall, of a batch that has fallen before. */
+  private liesFlat(level: number): boolean {
+    if (!slowerThan(this.line(48), 0.5, 0.75) && !slowerThan(this.line(72), 0.35, 0.5)) return false;
+    return this.lookedAt - (this.started.since ?? this.lookedAt) > 96 || this.progress(level) > 0.12;
+  }
+
+  /** So many points are left by the yeast's range, or by the curve where that says more. What has come to its end has said so already. */
+  private leavesAtLeast(points: number, level: number): boolean {
+    if (level - this.fgPrior().mean >= points) return true;
+    return !this.terminal.on && CURVE_SURE * (this.leftOnCurve()?.value ?? 0) >= points;
+  }
+
+  /** At this pace, or by its curve, it has long to go, or will end above its range. */
+  private crawls(rate: number, level: number): boolean {
+    if (this.leavesAtLeast(6 * Math.max(rate, 0.3), level)) return true;
+    const end = this.hoursToEnd();
+    if (end !== null && end > 130) return true;
+    const fg = this.expectedFg();
+    return fg !== null && fg > this.zoneTop();
+  }
+
+  /** The float may be climbing: what stands still by it does not. */
+  private mayClimb(): boolean {
+    return this.drifting.on || this.climbs(72) || this.climbs(168);
+  }
+
+  /** It falls by more than a point a day, so many standard errors beyond doubt. */
+  private falls(window: 8 | 24, sure: number): boolean {
+    const line = this.line(window);
+    return line !== null && -line.slope - sure * line.se > 1;
   }
 
   /** Below where it stood: what only swings about its level has not begun to fall. */
@@ -261,7 +289,7 @@ export class Watch extends Peak {
     const line48 = this.line(48);
     const still = line48 !== null && -line48.slope + line48.se < 0.3 && Math.abs(line48.slope) < 0.15;
     const wasOn = this.refermenting.on;
-    hold(this.refermenting, hour, level < this.plateau - drop && !this.stabilised && this.fallsBy(pace), 3, still || this.stabilised);
+    hold(this.refermenting, hour, () => !this.stabilised && level < this.plateau! - drop && this.fallsBy(pace), 3, () => this.stabilised || still);
     if (wasOn && !this.refermenting.on) this.plateau = level;
   }
 
