@@ -54,7 +54,7 @@ export function* assessEvery(
 }
 
 function stageOf(watch: Watch): Stage {
-  if (watch.terminal.on) return 'terminal';
+  if (watch.terminal.on || watch.ended.on) return 'terminal';
   if (!watch.started.on) return watch.track.bins.n === 0 ? 'unknown' : 'lag';
   if (watch.peaked.on) return 'slowing';
   const line = watch.line(12);
@@ -142,6 +142,8 @@ function terminalOf(watch: Watch, at: Instant, hour: number, level: number | nul
     const value = watch.track.instantOf(watch.terminal.since);
     return { value, lo: value, hi: value };
   }
+  // That it has ended is the curve's word alone: nobody saw when.
+  if (watch.ended.on) return null;
   const done = watch.progress(level);
   if (!fit || calls.started.verdict !== 'yes' || done < 0.15 || watch.stuck.on || (silent && !byHand)) return null;
   const hours = byHand ? hoursToWithin(watch, fit, hour, 1) : watch.hoursToEnd();

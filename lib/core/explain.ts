@@ -67,7 +67,7 @@ function curveLines(watch: Watch): string[] {
 
 function ruleLines(watch: Watch): string[] {
   const lines = ['', 'Rules (on, looks in a row towards it while it is off, since):'];
-  for (const name of ['started', 'overdue', 'peaked', 'airlock', 'sluggish', 'stuck', 'terminal', 'rack', 'bottle', 'refermenting', 'rising', 'drifting'] as const) {
+  for (const name of ['started', 'overdue', 'peaked', 'airlock', 'sluggish', 'stuck', 'terminal', 'ended', 'rack', 'bottle', 'refermenting', 'rising', 'drifting'] as const) {
     const rule = watch[name];
     lines.push(`  ${name.padEnd(13)} ${rule.on ? 'on ' : 'off'} ${String(rule.run).padStart(4)}  ${rule.since === null ? '' : `${fixed(rule.since, 0)} h`}`);
   }

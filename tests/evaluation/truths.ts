@@ -206,7 +206,8 @@ export class Truths {
         // Half a day of grace for sugar that has just gone in.
         if (batch.finals.some((stretch) => stretch.from > 0 && hour >= stretch.from && hour < stretch.from + 12)) return true;
         for (let h = hour; h <= hour + 48; h += 1) {
-          if (h > hour + 3 && batch.finals.some((stretch) => stretch.from > hour && stretch.from <= h)) return true;
+          // What goes in later is not known yet.
+          if (batch.finals.some((stretch) => stretch.from > hour && stretch.from <= h)) return true;
           if (this.gas(h) > 1.15 * this.swap) return false;
         }
         return true;

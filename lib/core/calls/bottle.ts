@@ -1,6 +1,5 @@
 import type { Call } from '../types';
 import { VOLUMES_PER_POINT } from '../gas/gas';
-import { BOTTLE_POINTS } from '../stages/remaining';
 import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, fallingWords, gravityWords, pointsWords, rateWords } from './words';
 
@@ -21,14 +20,15 @@ export function bottleCall(scene: Scene): Call {
   const { watch, level, rate } = scene;
   const top = watch.zoneTop();
   const most = mostToCome(scene);
+  const atMost = watch.bottlePoints();
   const worst = worstExtraVolumes(scene);
   const figures = [
     ...(level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG')]),
-    ...(most === null ? [] : [evidence('may still fall', most, BOTTLE_POINTS, 'points')]),
+    ...(most === null ? [] : [evidence('may still fall', most, atMost, 'points')]),
     ...(rate ? [evidence('fall', Math.max(0, rate.value), 0.5, 'points/d')] : []),
     ...(worst === null ? [] : [evidence('worst extra carbonation', worst, 1, 'volumes')]),
   ];
-  const changesIt = `Changes it: ${gravityWords(top)} or less, and at most ${pointsWords(BOTTLE_POINTS)} that may still fall.`;
+  const changesIt = `Changes it: ${gravityWords(top)} or less, and at most ${pointsWords(atMost)} that may still fall.`;
   if (watch.refermenting.on) {
     const fallen = level !== null && watch.plateau !== null ? pointsWords(watch.plateau - level) : 'More than 1.5 points';
     return call('hold', 'Do not bottle: it works again.', `${fallen} below where it had come to rest.`, {

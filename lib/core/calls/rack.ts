@@ -1,5 +1,5 @@
 import type { Call } from '../types';
-import { RACK_PACE } from '../stages/watch';
+import { RACK_PACE } from '../stages/ending';
 import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, fallingWords, gravityWords, pointsWords, rateWords } from './words';
 

@@ -10,12 +10,12 @@ import type { DrinkKind } from '../types';
 /** Share of the whole fall already done, where one factor gives way to the next. */
 const PROGRESS_EDGES = [0.15, 0.4, 0.65, 0.85, 0.95];
 
-const FACTOR_80 = [0.92, 0.95, 0.95, 0.98, 1.1, 1.6];
+const FACTOR_80 = [0.92, 0.95, 0.95, 0.98, 1.02, 1.45];
 const FACTOR_95 = [1.15, 1.15, 1.15, 1.15, 1.8, 3.0];
 /** Half width of the 80 % interval of ln(time to the end + 12 h). */
 const DATE_80 = [0.87, 0.61, 0.62, 0.62, 0.69, 1.2];
-/** How late a curve is whose yeast has alcohol to spare, and at its limit; and a tail of simple sugars (about the middles on the tuning seeds). */
-const LATE = { withRoom: 0.33, from: 0.7, atTolerance: -0.15, tail: 0.25 };
+/** How late a curve and a tail are, by kind: from where the tail is asked for a beer and a cider; else where the yeast has alcohol to spare, and at its limit (about the middles on the tuning seeds). */
+const LATE = { beer: { curve: -0.15, tail: -0.15 }, cider: { curve: -0.15, tail: 0.15 }, withRoom: { curve: 0.33, tail: 0.25 }, from: 0.7, atTolerance: -0.15 };
 
 interface Lateness {
   curve: number;
@@ -60,17 +60,19 @@ export const tailTellsDate = (done: number): boolean => done > TAIL_SPEAKS_FROM;
 
 /**
  * By how much the hours to go are too many, as their logarithm (of the hours and 12), by
- * the curve and by the tail. For simple sugars both slow down too long; the curve does not
- * where alcohol near what the yeast bears holds the end back (Levenspiel, Biotechnol. Bioeng. 22
+ * the curve and by the tail. For simple sugars both slow down too long, but not where
+ * alcohol near what the yeast bears holds the end back (Levenspiel, Biotechnol. Bioeng. 22
  * (1980) 1671-1687); `burden` is the alcohol at the end over what the yeast bears.
  */
 export function lateness(kind: DrinkKind, burden: number | null, done: number): Lateness {
-  if (kind === 'beer') return { curve: 0, tail: 0 };
-  // A cider's own priors already tell how soon it ends.
-  if (burden === null || kind === 'cider') return { curve: 0, tail: LATE.tail };
+  const nearing = tailTellsDate(done);
+  // The priors of these two already tell how soon the curve ends, until its last third.
+  if (kind === 'beer' || kind === 'cider') return nearing ? LATE[kind] : { ...LATE[kind], curve: 0 };
+  if (burden === null) return { ...LATE.withRoom, curve: 0 };
   const share = Math.min(1, Math.max(0, (burden - LATE.from) / (1 - LATE.from)));
-  const curve = LATE.withRoom + share * (LATE.atTolerance - LATE.withRoom);
-  return { curve: tailTellsDate(done) ? Math.min(0, curve) : curve, tail: LATE.tail };
+  const held = (late: number): number => late + share * (LATE.atTolerance - late);
+  const curve = held(LATE.withRoom.curve);
+  return { curve: nearing ? Math.min(0, curve) : curve, tail: held(LATE.withRoom.tail) };
 }
 
 /** The hours still to go, without what they are too late by: by the curve, and the further the fall the more by the tail. */

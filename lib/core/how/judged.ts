@@ -1,6 +1,6 @@
 /** Where the figures of a judgement come from: the batch page, the shelf and the rounds ask here. */
 import { GAS_L_PER_L_PER_POINT, VOLUMES_PER_POINT } from '../gas/gas';
-import { BOTTLE_POINTS } from '../stages/remaining';
+import { BOTTLE_LEAST, BOTTLE_MOST } from '../stages/remaining';
 import type { CallName } from '../types';
 import { how, type How, type InputTuple } from './how';
 import { ours, published, SOURCES } from './sources';
@@ -81,7 +81,7 @@ const RULES: Record<CallName, { formula: string; source: Parameters<typeof how>[
   stalled: { formula: 'stopped: under 0.5 points a day for 48 hours, or under 0.35 for 72, well above where the yeast’s range and tolerance let it end. Slow: under 2 points a day with more than 5 days to go', source: SOURCES.ownRule },
   temperature: { formula: 'median of 3 hours against the yeast’s range as told, with 0.4 °C of room', source: SOURCES.told },
   rack: { formula: 'inside the expected end and about 2 points still to come, no more than the limit of the fall, at three looks in a row', source: SOURCES.ownRule },
-  bottle: { formula: `inside the expected end, stable the longer the older it is (3 to 7 days), no sugar added for 5 days, and at most ${BOTTLE_POINTS} points that may still come, 9 times in 10; each such point makes ${VOLUMES_PER_POINT} volumes in a closed bottle`, source: ours('our own; 1 point gives 1.01 g/L of CO2 by Balling’s split. Two or three equal readings days apart are common practice') },
+  bottle: { formula: `inside the expected end, stable the longer the older it is (3 to 7 days), no sugar added for 5 days, and at most ${BOTTLE_MOST} points that may still come, 9 times in 10, fewer the higher it rests above where its yeast ends, down to ${BOTTLE_LEAST}; each such point makes ${VOLUMES_PER_POINT} volumes in a closed bottle`, source: ours('our own; 1 point gives 1.01 g/L of CO2 by Balling’s split. Two or three equal readings days apart are common practice') },
   sensor: { formula: 'silent after 6 hours, or six of its own intervals where that is longer; stuck where its noise falls under 0.3 of what is usual for it; adrift where a hydrometer says 4 points else', source: SOURCES.ownRule },
 };
 

@@ -59,6 +59,8 @@ export class Figures {
   readonly sluggish = latch();
   readonly stuck = latch();
   readonly terminal = latch();
+  /** The float gives nothing, and by its curve the end has come meanwhile. */
+  readonly ended = latch();
   readonly rack = latch();
   readonly bottle = latch();
   readonly refermenting = latch();

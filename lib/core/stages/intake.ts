@@ -124,7 +124,7 @@ export class Intake extends Outlook {
     this.pendingLevels = true;
     this.sweetened = sweetened;
     this.recordChanged();
-    for (const one of [this.peaked, this.airlock, this.sluggish, this.stuck, this.terminal, this.rack, this.bottle]) clear(one);
+    for (const one of [this.peaked, this.airlock, this.sluggish, this.stuck, this.terminal, this.ended, this.rack, this.bottle]) clear(one);
   }
 
   protected guessOg(): void {

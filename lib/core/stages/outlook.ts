@@ -3,7 +3,7 @@ import type { Tail } from '../series/tail';
 import { abvBalling } from '../strength/strength';
 import { sgOf } from '../units/convert';
 import { Figures } from './figures';
-import { held, mixed, remaining, shareOfTail, type Remaining } from './remaining';
+import { bottlePoints, held, mixed, remaining, shareOfTail, type Remaining } from './remaining';
 
 /** Hours between two views of the tail, which hardly changes from look to look. */
 const TAIL_H = 6;
@@ -100,6 +100,18 @@ export class Outlook extends Figures {
       { value: Math.max(0, level - prior.mean), sd: Math.hypot(prior.sd, this.track.calibrationSd(level)) },
     );
     return remaining(both.value, both.sd);
+  }
+
+  /** Points that may still come, nine times in ten, when it may be bottled. What was stabilised at rest does not go on to where its yeast ends. */
+  bottlePoints(): number {
+    const level = this.levelNow();
+    const { mean, sd } = this.fgPrior();
+    return bottlePoints(level === null || this.sweetHeld() ? 0 : level - mean, Math.hypot(sd, this.track.calibrationSd(mean)));
+  }
+
+  /** The end of the record tells what is left. */
+  protected tailTells(): boolean {
+    return this.tailNow() !== null;
   }
 
   /** Points still to fall, by the curve until the fall is nearly over and the further it is by it, the more by the tail. */

@@ -1,5 +1,13 @@
-/** Points that may still come, nine times in ten, when a batch may be bottled. */
-export const BOTTLE_POINTS = 1.2;
+/** Points that may still come, nine times in ten, when a batch may be bottled that rests no higher than where its yeast ends, and of one two spreads above that (ours). */
+export const BOTTLE_MOST = 1.3;
+export const BOTTLE_LEAST = 0.9;
+const HIGH_SPREADS = 2;
+
+/** The same for a level so many points above where its yeast ends, which is known to `spread`: what rests high is more often only slow. */
+export function bottlePoints(above: number, spread: number): number {
+  const height = Math.min(1, Math.max(0, above / (HIGH_SPREADS * spread)));
+  return BOTTLE_MOST - height * (BOTTLE_MOST - BOTTLE_LEAST);
+}
 
 /** Points still to fall, how well that is known, and the most it may be nine times in ten. */
 export interface Remaining {

@@ -1,31 +1,16 @@
 import type { BatchSetup, Reading } from '../types';
-import { VOLUMES_PER_POINT } from '../gas/gas';
 import type { Line } from '../series/line';
-import { CURVE_PAST_DAYS, Peak } from './peak';
+import { Ending } from './ending';
 import { clear, hold, never } from './latch';
-import { BOTTLE_POINTS } from './remaining';
 
 export { LOOK_H } from './intake';
 
-/** Points that may still come, nine times in ten, when a batch may be racked and when it is called finished. */
-const RACK_POINTS = 4.4;
-const TERMINAL_POINTS = 1.9;
-/** Points left by the curve alone, at half its pace, when a batch may be racked whose float gives nothing (ours). */
-const RACK_BLIND_POINTS = 2.5;
-/** Fall, points a day, under which it may be racked. */
-export const RACK_PACE = 2.5;
 /** Hours after the pitch at which a start is overdue. */
 export const OVERDUE_H: Record<BatchSetup['kind'], number> = { beer: 48, cider: 72, mead: 72, wine: 72 };
 
 /** Hours between two judgements of a batch that rests ready for bottles, and how far its level may move meanwhile, points (ours). */
 const REST_LOOK_H = 12;
 const REST_POINTS = 0.8;
-
-/** Most fall of two days, points a day and nine times in ten, at which it may have ended, and at which it may be bottled where both tails say so (ours). */
-const TERMINAL_PACE = 0.9;
-const BOTTLE_PACE = 0.7;
-/** Fall over three days, points a day, under which they count as quiet: less than a hydrometer shows, a point in all (the trade's readings three days apart). */
-const QUIET_PACE = 1 / 3;
 
 /** Share of what the curve says is left that counts against the yeast's range (ours): early it may see too much. */
 const CURVE_SURE = 0.75;
@@ -37,7 +22,7 @@ const STILL_CLIMB = 0.02;
 const STUCK_BAND = 1;
 
 /** The rules, one look every three hours: what turns each statement on, and what turns it off again. */
-export class Watch extends Peak {
+export class Watch extends Ending {
   private noise = 0.5;
   /** Looks in a row at which a stuck batch seemed to fall within hours. */
   private stirs = 0;
@@ -76,7 +61,7 @@ export class Watch extends Peak {
       this.judgePeak(hour);
       this.judgeAirlock(hour);
     }
-    if (this.started.on && !this.rack.on && this.isBlind()) this.judgeRackBlind(hour);
+    if (this.started.on) this.judgeUnseen(hour);
     const day = this.line(48);
     hold(this.rising, hour, () => day !== null && day.slope - 1.64 * day.se > 0.25, 2, () => day !== null && day.slope - 1.64 * day.se <= 0);
     const mayDrift = this.quietSinceAddition(48, 240) && !this.segment.fruit && hour > 96;
@@ -116,82 +101,6 @@ export class Watch extends Peak {
     const level = this.levelNow();
     if (!line || level === null || Math.abs(line.slope) > 2 || this.segment.fruit) return;
     if (this.lowest === null || level < this.lowest) this.lowest = level;
-  }
-
-  private judgeEnd(hour: number): void {
-    const level = this.levelNow();
-    const line24 = this.line(24);
-    // After a float that stuck there may be no two days of record yet.
-    const line48 = this.line(48) ?? line24;
-    const lower48 = line48 ? -line48.slope - 1.64 * line48.se : null;
-    const upper48 = line48 ? -line48.slope + 1.28 * line48.se : null;
-    const ground = this.groundLevel();
-    const inside = ground !== null && (ground <= this.zoneTop() || this.sweetHeld()) && this.peaked.on;
-    // A level that would not be called stuck may be the end: the yeast's range is often a little wrong.
-    const near = ground !== null && (ground <= this.stuckFloor() || this.sweetHeld()) && this.peaked.on;
-    // The tail is only asked where the fall is slow enough for it to matter.
-    const ceiling = this.bottle.on ? Number.POSITIVE_INFINITY : this.terminal.on ? BOTTLE_PACE : TERMINAL_PACE;
-    const slow = upper48 !== null && upper48 < ceiling && (inside || (near && !this.coldNow()));
-
-    const sugary = level !== null && this.sweetStill(level);
-    const wasDone = this.terminal.on;
-    hold(this.terminal, hour, () => slow && upper48 < TERMINAL_PACE && !sugary && this.quietSinceAddition(60, 120) && this.leavesLess(TERMINAL_POINTS), 1, () => (lower48 !== null && lower48 > 0.8) || this.refermenting.on);
-    if (this.terminal.on && !wasDone) this.plateau = level;
-
-    if (this.terminal.on) hold(this.rack, hour, () => true, 2, never);
-    else if (!this.isBlind()) {
-      const line12 = this.line(12) ?? line24;
-      const pace = Math.min(...[line12, line24].map((line) => (line ? -line.slope : Number.POSITIVE_INFINITY)));
-      const asked = near && !sugary && pace < RACK_PACE && this.quietSinceAddition(60, 120);
-      hold(this.rack, hour, () => asked && (this.leftOnCurve()?.most ?? Number.POSITIVE_INFINITY) < RACK_POINTS, 2, () => line12 !== null && -line12.slope - 1.64 * line12.se > RACK_PACE);
-    }
-
-    const still = slow && inside && upper48 < BOTTLE_PACE && !this.rising.on && !this.refermenting.on && !sugary && this.quietSinceAddition(120, 168);
-    // A steady small fall shows in what it leaves to come, a whole volume of gas, before two days of it are beyond doubt.
-    const less = 1 / VOLUMES_PER_POINT;
-    hold(
-      this.bottle,
-      hour,
-      () => still && !this.mayOnlyBeCold() && this.threeQuietDays() && this.leavesLess(BOTTLE_POINTS) && this.bothEndsSaySo(),
-      2,
-      () => (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on || (slow && this.remainingNow() !== null && !this.leavesLess(less)),
-    );
-  }
-
-  /** Less than so many points may still come, nine times in ten. */
-  private leavesLess(points: number): boolean {
-    const left = this.remainingNow();
-    return left !== null && left.most < points;
-  }
-
-  /** Little is left by the shorter end of the record, which sees a late fall, and by the longer, which is seldom deceived. */
-  private bothEndsSaySo(): boolean {
-    const level = this.levelNow();
-    const long = this.tail() && this.longTail();
-    return level !== null && long !== null && this.againstRange(level, long).most < BOTTLE_POINTS;
-  }
-
-  /** The float is stuck or silent. */
-  private isBlind(): boolean {
-    return this.frozen !== null || this.lookedAt - this.track.lastSound(this.lookedAt) > Math.max(6, 6 * this.track.spacing);
-  }
-
-  /** May be racked by what the float gave before: so little is left by the curve even were the fall half as quick since. */
-  private judgeRackBlind(hour: number): void {
-    const fit = this.fit();
-    const passed = this.pastCurvePeak();
-    if (!fit || passed === null || passed < CURVE_PAST_DAYS || !this.peaked.on || this.stuck.on || this.sluggish.on) return;
-    const from = this.track.tauAt(this.segment.from);
-    const last = this.track.tauAt(this.track.lastSound(hour)) - from;
-    const now = this.track.tauAt(hour) - from;
-    const left = (fit.curve.og - fit.curve.fg) * fit.curve.share(last + (now - last) / 2);
-    hold(this.rack, hour, () => left < RACK_BLIND_POINTS && this.quietSinceAddition(60, 120), 2, never);
-  }
-
-  /** Three days (two, where there are no more) that hardly fall, and surely do not fall fast. */
-  private threeQuietDays(): boolean {
-    const line = this.line(72) ?? this.line(48);
-    return line === null || (-line.slope < QUIET_PACE && -line.slope + 1.28 * line.se < 0.6);
   }
 
   /** The gravity climbs, which a ferment does not: what is seen is the float. */

@@ -89,6 +89,22 @@ describe('the calls', () => {
     expect(at(12, record(6, (day) => Math.max(25, cider(day)))).calls.rack.verdict).not.toBe('yes');
   });
 
+  it('take it for finished by its curve while the float is stuck, give no date for what nobody saw, and take that back when the float works again and stands high', () => {
+    const stuck = record(25, cider).map((reading) => {
+      const day = (reading.at - PITCH) / DAY;
+      return day > 7 && day < 20 ? { ...reading, gravity: 1 + cider(7) / 1000 } : reading;
+    });
+    expect(at(6.9, stuck).stage).toBe('slowing');
+    const blind = at(12, stuck);
+    expect(blind).toMatchObject({ stage: 'terminal', terminalAt: null });
+    expect(blind.calls).toMatchObject({ sensor: { kind: 'frozen' }, bottle: { verdict: 'unknown' } });
+    expect(at(20.5, stuck).stage).toBe('terminal');
+    const high = stuck.map((reading) => (reading.at >= PITCH + 20 * DAY ? { ...reading, gravity: reading.gravity + 0.012 } : reading));
+    expect(at(22, high).stage).toBe('slowing');
+    // Two fifths of the fall were still to come when it was last seen, and not a day has gone by.
+    expect(at(4, record(3.2, cider)).stage).not.toBe('terminal');
+  });
+
   it('see the peak of a late start within two days of it', () => {
     const late = (day: number): number => cider(Math.max(0, day - 5));
     let over = 5;

@@ -1,5 +1,16 @@
 import { describe, expect, it } from 'vitest';
-import { held, mixed, remaining, shareOfTail } from '../../../lib/core/stages/remaining';
+import { BOTTLE_LEAST, BOTTLE_MOST, bottlePoints, held, mixed, remaining, shareOfTail } from '../../../lib/core/stages/remaining';
+
+describe('what may still come of a batch to be bottled', () => {
+  it('is less the higher it rests above where its yeast ends, and no more below that', () => {
+    expect(bottlePoints(-4, 2)).toBe(BOTTLE_MOST);
+    expect(bottlePoints(0, 2)).toBe(BOTTLE_MOST);
+    expect(bottlePoints(2, 2)).toBeCloseTo((BOTTLE_MOST + BOTTLE_LEAST) / 2, 12);
+    expect(bottlePoints(9, 2)).toBeCloseTo(BOTTLE_LEAST, 12);
+    // The surer the yeast's end is, the sooner it counts.
+    expect(bottlePoints(2, 1)).toBeLessThan(bottlePoints(2, 3));
+  });
+});
 
 describe('what is still to fall', () => {
   it('is at most its mean and 1.28 standard deviations, nine times in ten', () => {
