@@ -1,4 +1,4 @@
-import { medianInPlace } from './order';
+import { medianBetween, medianInPlace } from './order';
 
 /** A straight line through a stretch of gravity, with an honest standard error. */
 export interface Line {
@@ -22,19 +22,68 @@ const HUBER_K = 1.5;
 const SIGMA_FLOOR = 0.08;
 const SE_FLOOR = 0.05;
 
-let buffers = { x: new Float64Array(512), residuals: new Float64Array(512), scratch: new Float64Array(512) };
+let buffers = { x: new Float64Array(512), scratch: new Float64Array(512) };
 const blockT = new Float64Array(BLOCKS);
 const blockG = new Float64Array(BLOCKS);
-const slopes = new Float64Array((BLOCKS * (BLOCKS - 1)) / 2);
+const slopes = new Float64Array((BLOCKS * (BLOCKS - 1)) / 2 + 1);
 
 /** Room for n points; one set serves every line, for a history takes thousands of them. */
 function room(n: number): typeof buffers {
-  if (n > buffers.x.length) buffers = { x: new Float64Array(2 * n), residuals: new Float64Array(2 * n), scratch: new Float64Array(2 * n) };
+  if (n > buffers.x.length) buffers = { x: new Float64Array(2 * n), scratch: new Float64Array(2 * n) };
   return buffers;
 }
 
+/** Median distance of the points from the last line, points: where that of the next is looked for first. It changes no result. */
+let usualDistance = 0.2;
+/** How far about it, as a share; and the slope's about the straight one through the blocks, in its standard errors (both the quickest, measured). */
+const DISTANCE_WITHIN = 0.3;
+const SLOPE_WITHIN = 1.5;
+
 /** Lags, in bins, over which noise may hang together. */
 const LAGS = 6;
+/** Sums of products of the residuals with themselves, and with those of one to six bins before. */
+const products = new Float64Array(LAGS + 1);
+
+/** Fills `products` from the residuals about a + b·x, cut at `clip`: in one pass, in which the sums need not wait for each other. */
+function correlate(g: Float64Array, from: number, x: Float64Array, n: number, a: number, b: number, clip: number): void {
+  let p0 = 0;
+  let p1 = 0;
+  let p2 = 0;
+  let p3 = 0;
+  let p4 = 0;
+  let p5 = 0;
+  let p6 = 0;
+  let r1 = 0;
+  let r2 = 0;
+  let r3 = 0;
+  let r4 = 0;
+  let r5 = 0;
+  let r6 = 0;
+  for (let i = 0; i < n; i += 1) {
+    const whole = g[from + i]! - a - b * x[i]!;
+    const r = whole > clip ? clip : whole < -clip ? -clip : whole;
+    p0 += r * r;
+    p1 += r * r1;
+    p2 += r * r2;
+    p3 += r * r3;
+    p4 += r * r4;
+    p5 += r * r5;
+    p6 += r * r6;
+    r6 = r5;
+    r5 = r4;
+    r4 = r3;
+    r3 = r2;
+    r2 = r1;
+    r1 = r;
+  }
+  products[0] = p0;
+  products[1] = p1;
+  products[2] = p2;
+  products[3] = p3;
+  products[4] = p4;
+  products[5] = p5;
+  products[6] = p6;
+}
 
 /**
  * By how much noise that hangs together widens the variance of a slope: the larger
@@ -43,20 +92,63 @@ const LAGS = 6;
  * noise on top hides the slow part from the first lag. Each autocorrelation is
  * raised by 2/n for the line that was taken out; at most 19.
  */
-function inflation(residuals: Float64Array, n: number): number {
-  let square = 0;
-  for (let i = 0; i < n; i += 1) square += residuals[i]! * residuals[i]!;
+function inflation(n: number): number {
+  const square = products[0]!;
   if (square <= 0) return 1;
   let sum = 0;
   let first = 0;
   for (let lag = 1; lag <= LAGS && lag < n - 2; lag += 1) {
-    let cross = 0;
-    for (let i = lag; i < n; i += 1) cross += residuals[i]! * residuals[i - lag]!;
-    const r = Math.max(0, cross / square + 2 / n);
+    const r = Math.max(0, products[lag]! / square + 2 / n);
     if (lag === 1) first = Math.min(0.9, r);
     sum += r;
   }
   return Math.min(19, Math.max((1 + first) / (1 - first), 1 + 2 * sum));
+}
+
+/** Medians of g in up to twelve stretches of as many points each, to `blockG`, with the mean of x of each; how many stretches. */
+function blockMedians(g: Float64Array, from: number, x: Float64Array, n: number, scratch: Float64Array): number {
+  const blocks = Math.min(BLOCKS, n);
+  let lo = 0;
+  for (let i = 0; i < blocks; i += 1) {
+    const hi = Math.floor(((i + 1) * n) / blocks);
+    let sum = 0;
+    for (let j = lo; j < hi; j += 1) {
+      sum += x[j]!;
+      scratch[j - lo] = g[from + j]!;
+    }
+    blockT[i] = sum / (hi - lo);
+    blockG[i] = hi - lo === 1 ? scratch[0]! : medianInPlace(scratch, 0, hi - lo);
+    lo = hi;
+  }
+  return blocks;
+}
+
+/** Median slope of all pairs of blocks; NaN where none are apart in time. `weight` is the number of points of a block. */
+function medianSlope(blocks: number, weight: number): number {
+  let pairs = 0;
+  let st = 0;
+  let sg = 0;
+  let stt = 0;
+  let stg = 0;
+  for (let i = 0; i < blocks; i += 1) {
+    const ti = blockT[i]!;
+    const gi = blockG[i]!;
+    for (let j = i + 1; j < blocks; j += 1) {
+      const dt = blockT[j]! - ti;
+      slopes[pairs] = (blockG[j]! - gi) / dt;
+      pairs += Number(dt > 0);
+    }
+    const y = gi - blockG[0]!;
+    st += ti;
+    sg += y;
+    stt += ti * ti;
+    stg += ti * y;
+  }
+  // It lies near the least-squares slope: there it is looked for first.
+  const spread = stt - (st * st) / blocks;
+  const about = (stg - (st * sg) / blocks) / spread;
+  const reach = (SLOPE_WITHIN * usualDistance) / Math.sqrt(weight * spread);
+  return medianBetween(slopes, pairs, about - reach, about + reach);
 }
 
 /**
@@ -69,48 +161,26 @@ function inflation(residuals: Float64Array, n: number): number {
 export function robustLine(t: Float64Array, g: Float64Array, from: number, to: number): Line | null {
   const n = to - from;
   if (n < 5) return null;
-  const { x, residuals, scratch } = room(n);
+  const { x, scratch } = room(n);
   const middle = (t[from]! + t[to - 1]!) / 2;
   for (let i = 0; i < n; i += 1) x[i] = t[from + i]! - middle;
 
-  const blocks = Math.min(BLOCKS, n);
-  for (let i = 0; i < blocks; i += 1) {
-    const lo = Math.floor((i * n) / blocks);
-    const hi = Math.floor(((i + 1) * n) / blocks);
-    let sum = 0;
-    for (let j = lo; j < hi; j += 1) {
-      sum += x[j]!;
-      scratch[j - lo] = g[from + j]!;
-    }
-    blockT[i] = sum / (hi - lo);
-    blockG[i] = medianInPlace(scratch, 0, hi - lo);
-  }
-  let pairs = 0;
-  for (let i = 0; i < blocks; i += 1) {
-    for (let j = i + 1; j < blocks; j += 1) {
-      const dt = blockT[j]! - blockT[i]!;
-      if (dt > 0) {
-        slopes[pairs] = (blockG[j]! - blockG[i]!) / dt;
-        pairs += 1;
-      }
-    }
-  }
-  if (pairs === 0) return null;
-  let b = medianInPlace(slopes, 0, pairs);
+  const blocks = blockMedians(g, from, x, n, scratch);
+  let b = medianSlope(blocks, n / blocks);
+  if (Number.isNaN(b)) return null;
   for (let i = 0; i < blocks; i += 1) scratch[i] = blockG[i]! - b * blockT[i]!;
   let a = medianInPlace(scratch, 0, blocks);
 
   let sigma = SIGMA_FLOOR;
   let counted = 0;
   let spread = 0;
+  let reach = DISTANCE_WITHIN * usualDistance;
   for (let round = 0; round < ROUNDS; round += 1) {
     // The scale settles before the line does.
     if (round < 2) {
-      for (let i = 0; i < n; i += 1) {
-        const r = g[from + i]! - a - b * x[i]!;
-        scratch[i] = r < 0 ? -r : r;
-      }
-      sigma = Math.max(SIGMA_FLOOR, 1.4826 * medianInPlace(scratch, 0, n));
+      for (let i = 0; i < n; i += 1) scratch[i] = Math.abs(g[from + i]! - a - b * x[i]!);
+      usualDistance = medianBetween(scratch, n, usualDistance - reach, usualDistance + reach);
+      sigma = Math.max(SIGMA_FLOOR, 1.4826 * usualDistance);
     }
     const knee = HUBER_K * sigma;
     const cut = 6 * sigma + 0.5;
@@ -123,16 +193,16 @@ export function robustLine(t: Float64Array, g: Float64Array, from: number, to: n
     for (let i = 0; i < n; i += 1) {
       const xi = x[i]!;
       const y = g[from + i]! - a;
-      const r = y - b * xi;
-      const size = r < 0 ? -r : r;
+      const size = Math.abs(y - b * xi);
       if (size > cut) continue;
       const w = size <= knee ? 1 : knee / size;
+      const wx = w * xi;
       counted += 1;
       sw += w;
-      st += w * xi;
+      st += wx;
       sg += w * y;
-      stt += w * xi * xi;
-      stg += w * xi * y;
+      stt += wx * xi;
+      stg += wx * y;
     }
     const det = sw * stt - st * st;
     if (!(det > 1e-9 * sw)) return null;
@@ -141,18 +211,16 @@ export function robustLine(t: Float64Array, g: Float64Array, from: number, to: n
     const shift = (sg - slope * st) / sw;
     // Closer than a twentieth of the least standard error.
     const still = Math.abs(slope - b) < 1e-4 && Math.abs(shift) < 5e-3;
+    // No point's distance has changed by more.
+    reach = Math.abs(shift) + Math.abs(slope - b) * Math.max(-x[0]!, x[n - 1]!) + 1e-9;
     b = slope;
     a += shift;
     if (still) break;
   }
   if (counted < 5) return null;
 
-  const clip = 2.5 * sigma;
-  for (let i = 0; i < n; i += 1) {
-    const r = g[from + i]! - a - b * x[i]!;
-    residuals[i] = r > clip ? clip : r < -clip ? -clip : r;
-  }
-  const variance = (sigma * sigma * inflation(residuals, n)) / spread;
+  correlate(g, from, x, n, a, b, 2.5 * sigma);
+  const variance = (sigma * sigma * inflation(n)) / spread;
   return {
     slope: b * 24,
     se: Math.max(SE_FLOOR, 24 * Math.sqrt(variance)),

@@ -57,12 +57,37 @@ export function select(values: Float64Array, from: number, to: number, k: number
 export function medianInPlace(values: Float64Array, from: number, to: number): number {
   const n = to - from;
   if (n <= 0) return Number.NaN;
-  const half = n >> 1;
-  const upper = select(values, from, to, half);
-  if (n % 2 === 1) return upper;
+  return middle(values, from, to, n >> 1, n % 2 === 1);
+}
+
+/** The k-th smallest of values[from..to) where their whole number is odd, else the mean of it and the one before. */
+function middle(values: Float64Array, from: number, to: number, k: number, odd: boolean): number {
+  const upper = select(values, from, to, k);
+  if (odd) return upper;
   let lower = Number.NEGATIVE_INFINITY;
-  for (let i = from; i < from + half; i += 1) if (values[i]! > lower) lower = values[i]!;
+  for (let i = from; i < from + k; i += 1) if (values[i]! > lower) lower = values[i]!;
   return (lower + upper) / 2;
+}
+
+let between = new Float64Array(512);
+
+/**
+ * Median of values[0..n), which is looked for between two bounds, mostly near it: only what lies
+ * there is put in order. The same as {@link medianInPlace} gives, also where it lies elsewhere.
+ */
+export function medianBetween(values: Float64Array, n: number, low: number, high: number): number {
+  if (n >= between.length) between = new Float64Array(2 * n);
+  let below = 0;
+  let upTo = 0;
+  for (let i = 0; i < n; i += 1) {
+    const value = values[i]!;
+    between[upTo - below] = value;
+    below += Number(value < low);
+    upTo += Number(value <= high);
+  }
+  const half = (n >> 1) - below;
+  if (half < 1 || half >= upTo - below) return medianInPlace(values, 0, n);
+  return middle(between, 0, upTo - below, half, n % 2 === 1);
 }
 
 /** Median of a list, which stays as it was; NaN of an empty one. */
