@@ -1,6 +1,9 @@
 import type { Reading } from '../types';
 import { medianInPlace } from './order';
 
+/** Least of what a gap between two bins may count as covered, h. */
+export const GAP_H = 1.01;
+
 /** Hourly bins of a float's readings; hours are counted from the pitch. Arrays are longer than `n`. */
 export interface Bins {
   n: number;
@@ -17,6 +20,8 @@ export interface Bins {
   /** Noise between readings, points: mean size of their second differences, so that a steady fall counts nothing; NaN where there was none. */
   flicker: Float64Array;
   count: Int32Array;
+  /** Hours covered from the first bin to this one, at the least: no gap counts more than {@link GAP_H}. */
+  covered: Float64Array;
   /** 1 where the data must not enter fits or slopes (frozen float). */
   masked: Uint8Array;
 }
@@ -84,6 +89,7 @@ function emptyBins(capacity: number): Bins {
     temperature: new Float64Array(capacity),
     flicker: new Float64Array(capacity),
     count: new Int32Array(capacity),
+    covered: new Float64Array(capacity),
     masked: new Uint8Array(capacity),
   };
 }
@@ -99,12 +105,13 @@ function widen(bins: Bins): void {
   wider.temperature.set(bins.temperature);
   wider.flicker.set(bins.flicker);
   wider.count.set(bins.count);
+  wider.covered.set(bins.covered);
   wider.masked.set(bins.masked);
   Object.assign(bins, { ...wider, n: bins.n });
 }
 
 export function newBins(): Bins {
-  return emptyBins(256);
+  return emptyBins(1024);
 }
 
 const scratch = new Float64Array(4096);
@@ -137,7 +144,7 @@ export function appendBin(
     const value = scratch[j]!;
     const bend = value - 2 * last + before;
     if (bend === bend) {
-      total += bend < 0 ? -bend : bend;
+      total += Math.abs(bend);
       bends += 1;
     }
     before = last;
@@ -150,6 +157,7 @@ export function appendBin(
   const half = n >> 1;
   const mid = n % 2 === 1 ? readings[from + half]!.at : (readings[from + half - 1]!.at + readings[from + half]!.at) / 2;
   bins.t[i] = (mid - origin) / HOUR_MS;
+  bins.covered[i] = i === 0 ? 0 : bins.covered[i - 1]! + Math.min(GAP_H, bins.t[i]! - bins.t[i - 1]!);
   let warm = 0;
   for (let j = 0; j < n; j += 1) {
     const { temperature } = readings[from + j]!;

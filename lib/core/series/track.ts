@@ -1,5 +1,5 @@
 import type { BatchEvent, BatchSetup, Instant, Reading } from '../types';
-import { appendBin, binFrom, newBins, type Bins } from './bins';
+import { appendBin, binFrom, GAP_H, newBins, type Bins } from './bins';
 import { robustLine, type Line } from './line';
 import { fitTail, type Tail } from './tail';
 import { medianInPlace, middleOf, select } from './order';
@@ -55,6 +55,8 @@ export class Track {
   private readings: Reading[] = [];
   private taken = 0;
   private sinceMeasured = 0;
+  /** Some of it is masked. */
+  private masks = false;
 
   constructor(
     readonly setup: BatchSetup,
@@ -135,6 +137,12 @@ export class Track {
 
   /** Robust line over [from, to) h, frozen stretches left out. Null when less than `cover` of it has data. */
   line(from: number, to: number, cover = 0.6): Line | null {
+    const { bins } = this;
+    const a = binFrom(bins, Math.ceil(from - 1e-9));
+    const b = this.upTo(to);
+    // A record without holes is read where it lies.
+    const whole = !this.masks && b - a >= 5 && b - a <= lineT.length && 1 + bins.covered[b - 1]! - bins.covered[a]! > cover * (to - from) + 1e-9;
+    if (whole) return robustLine(bins.t, bins.g, a, b);
     const kept = this.gather(from, to, cover);
     return kept < 5 ? null : robustLine(lineT, lineG, 0, kept);
   }
@@ -155,7 +163,7 @@ export class Track {
   /** The hour since which there are so many hours of sound record before `to`; at most two and a half times as far back. */
   private reachOf(hours: number, to: number): number {
     const { bins } = this;
-    const reach = Math.max(1.01, 1.6 * this.spacing);
+    const reach = Math.max(GAP_H, 1.6 * this.spacing);
     let covered = 0;
     let next = to;
     for (let i = this.upTo(to) - 1; i >= 0 && covered < hours; i -= 1) {
@@ -175,7 +183,7 @@ export class Track {
     if (b - a < 5) return 0;
     let kept = 0;
     let covered = 0;
-    const reach = Math.max(1.01, 1.6 * this.spacing);
+    const reach = Math.max(GAP_H, 1.6 * this.spacing);
     for (let i = a; i < b && kept < lineT.length; i += 1) {
       if (bins.masked[i]) continue;
       lineT[kept] = bins.t[i]!;
@@ -211,6 +219,22 @@ export class Track {
       n += 1;
     }
     return n === 0 ? null : medianInPlace(scratch, 0, n);
+  }
+
+  /** Temperature of the coldest bin of [from, to), °C; Infinity with none. */
+  coldest(from: number, to: number): number {
+    const { temperature } = this.bins;
+    let coldest = Number.POSITIVE_INFINITY;
+    for (let i = binFrom(this.bins, Math.ceil(from - 1e-9)), end = this.upTo(to); i < end; i += 1) coldest = Math.min(coldest, temperature[i]!);
+    return coldest;
+  }
+
+  /** Temperature of the warmest bin of [from, to), °C; -Infinity with none. */
+  warmest(from: number, to: number): number {
+    const { temperature } = this.bins;
+    let warmest = Number.NEGATIVE_INFINITY;
+    for (let i = binFrom(this.bins, Math.ceil(from - 1e-9)), end = this.upTo(to); i < end; i += 1) warmest = Math.max(warmest, temperature[i]!);
+    return warmest;
   }
 
   /** Thermal age at an hour between or after the bins, days. */
@@ -313,6 +337,7 @@ export class Track {
 
   mask(fromHour: number, toHour: number): void {
     const { bins } = this;
+    this.masks = true;
     for (let i = binFrom(bins, Math.ceil(fromHour)); i < bins.n && bins.hour[i]! < toHour; i += 1) bins.masked[i] = 1;
   }
 }

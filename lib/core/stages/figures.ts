@@ -110,7 +110,8 @@ export class Figures {
   }
 
   line(window: number): Line | null {
-    if (this.lines.has(window)) return this.lines.get(window)!;
+    const known = this.lines.get(window);
+    if (known !== undefined) return known;
     const from = Math.max(this.lookedAt - window, this.segment.restarted ? this.segment.from + 1 : -48);
     const line = this.lookedAt - from < 0.6 * window ? null : this.track.line(from, this.lookedAt);
     this.lines.set(window, line);
@@ -267,6 +268,10 @@ export class Figures {
   }
 
   private measureCold(): boolean {
+    // Where not even the coldest hour tells of it, no median does.
+    const coldest = this.track.coldest(this.lookedAt - 12, this.lookedAt);
+    const within = !this.setup.temperature || coldest >= this.setup.temperature.minC - 0.4;
+    if (within && this.track.warmest(this.lookedAt - 96, this.lookedAt - 48) - coldest <= COOLED_C) return false;
     const now = this.track.temperature(this.lookedAt - 12, this.lookedAt);
     if (now === null) return false;
     if (this.setup.temperature && now < this.setup.temperature.minC - 0.4) return true;

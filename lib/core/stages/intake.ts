@@ -12,11 +12,16 @@ export const LOOK_H = 3;
 /** Share of fruit that is sugar where nobody says. Common practice. */
 const FRUIT_SUGAR = 0.1;
 
+/** Looks whose noise tells of the usual one. */
+const NOISES = 120;
+
 /** Takes in readings and events, and keeps the record straight: additions, hydrometer readings, steps, a frozen float. */
 export class Intake extends Outlook {
   /** Highest rate over each window that the peak is sought in. */
   protected readonly maxRates = new Map<number, { rate: number; se: number }>();
-  private noiseHistory: number[] = [];
+  /** The last noise indices, in no order, and how many there have been. */
+  private readonly noises = new Float64Array(NOISES);
+  private noisesTaken = 0;
   private usualNoise: number | null = null;
   private frozenLooks = 0;
   private events: BatchEvent[] = [];
@@ -207,10 +212,10 @@ export class Intake extends Outlook {
       }
     } else {
       this.frozenLooks = 0;
-      this.noiseHistory.push(index);
-      if (this.noiseHistory.length > 120) this.noiseHistory.shift();
-      const n = this.noiseHistory.length;
-      if (n === 6 || (n > 6 && Math.round(this.lookedAt / LOOK_H) % 4 === 0)) this.usualNoise = median(this.noiseHistory);
+      this.noises[this.noisesTaken % NOISES] = index;
+      this.noisesTaken += 1;
+      const n = this.noisesTaken;
+      if (n === 6 || (n > 6 && Math.round(this.lookedAt / LOOK_H) % 4 === 0)) this.usualNoise = median(this.noises.subarray(0, n));
     }
   }
 }
