@@ -45,6 +45,12 @@ export function neckCall(scene: Scene): Call {
   if (!gas || scene.silent || watch.frozen) {
     return call('unknown', 'Leave the tube on.', 'The gas is not known while the sensor gives nothing to go by.', { act: 'Look at the foam before you swap.', changesIt });
   }
+  if (watch.waitsForWarmth) {
+    return call('hold', 'Leave the tube on: it is only cold.', `Gas ${gasWords(gas.value)}; warm again it may give ${gasWords(watch.gasIfWarmed())}, and an airlock is safe under ${gasWords(limit)}.`, {
+      evidence: figures,
+      changesIt: `Changes it: three warm days with gas ${gasWords(limit)} or less.`,
+    });
+  }
   const expected = watch.peaked.on ? hoursToSwap(scene, limit) : null;
   if (expected !== null && expected < 72) {
     const at = later(scene, expected);

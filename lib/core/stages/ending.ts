@@ -42,10 +42,9 @@ export class Ending extends Peak {
 
     if (this.terminal.on) hold(this.rack, hour, () => true, 2, never);
     else if (!this.isBlind()) {
-      const line12 = this.line(12) ?? line24;
-      const pace = Math.min(...[line12, line24].map((line) => (line ? -line.slope : Number.POSITIVE_INFINITY)));
+      const pace = Math.min(...[this.line(12), line24].map((line) => (line ? -line.slope : Number.POSITIVE_INFINITY)));
       const asked = near && !sugary && pace < RACK_PACE && this.quietSinceAddition(60, 120);
-      hold(this.rack, hour, () => asked && this.leavesLittle(), 2, () => line12 !== null && -line12.slope - 1.64 * line12.se > RACK_PACE);
+      hold(this.rack, hour, () => asked && this.leavesLittle(), 2, () => line24 !== null && -line24.slope - 1.64 * line24.se > RACK_PACE);
     }
 
     const still = slow && inside && upper48 < BOTTLE_PACE && !this.rising.on && !this.refermenting.on && !sugary && this.quietSinceAddition(120, 168);

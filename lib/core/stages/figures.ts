@@ -64,6 +64,8 @@ export class Figures {
   readonly rack = latch();
   readonly bottle = latch();
   readonly refermenting = latch();
+  readonly tooCold = latch();
+  readonly tooWarm = latch();
   readonly rising = latch();
   readonly drifting = latch();
   stuckCold = false;
@@ -255,7 +257,7 @@ export class Figures {
   }
 
   /** Gas, L/h, if a cold vessel were warm again: its best pace in the measure of what is left. */
-  protected gasIfWarmed(): number {
+  gasIfWarmed(): number {
     const level = this.levelNow();
     const { mean } = this.fgPrior();
     const whole = this.segment.effectiveOg - mean;

@@ -10,6 +10,9 @@ const CURVE_GAS_ROOM = 1.5;
 /** By how much the curve's gas may lie over the limit where the record is under it (ours). */
 const CURVE_GAS_SLACK = 1.5;
 
+/** By how much the gas must be over the limit to take a swap back: at the limit it must not flicker (ours). */
+const GAS_BAND = 1.3;
+
 /** Hours that a cold vessel may need to work as it could, once it is warm again (ours). */
 const WARMING_H = 60;
 
@@ -17,6 +20,8 @@ const WARMING_H = 60;
 export class Peak extends Intake {
   /** Hour of the last look at which it was cold. */
   private lastCold: number | null = null;
+  /** A cold vessel with sugar left: it is quiet only until somebody warms it. */
+  waitsForWarmth = false;
   /** Hour since which it has been cold, with no warm days between. */
   private coldSince = 0;
 
@@ -81,6 +86,7 @@ export class Peak extends Intake {
   }
 
   protected judgeAirlock(hour: number): void {
+    this.waitsForWarmth = false;
     if (!this.peaked.on || (this.airlock.on && this.terminal.on)) return;
     // Any window bounds the present rate from above while it falls; the sharpest one wins.
     let upper = Number.POSITIVE_INFINITY;
@@ -96,11 +102,11 @@ export class Peak extends Intake {
     const limit = this.swapGas();
     // A float that is stuck or silent leaves what it told before.
     const blind = this.frozen !== null || upper === Number.POSITIVE_INFINITY;
-    // A cold vessel with sugar left is quiet only until somebody warms it.
-    const waiting = this.lastCold !== null && hour - this.lastCold < WARMING_H && this.gasIfWarmed() > limit;
+    const cold = this.lastCold !== null && hour - this.lastCold < WARMING_H;
+    this.waitsForWarmth = cold && this.gasIfWarmed() > (this.airlock.on ? GAS_BAND : 1) * limit;
     // Fresh sugar is not at its strongest at once, and yeast that had come to rest wakes slowly.
     const settled = this.quietSinceAddition(this.sweetened ? 72 : 24, 72);
-    hold(this.airlock, hour, () => settled && !waiting && (blind ? CURVE_GAS_ROOM * this.gasByCurve() < limit : upper < limit && this.curveAgrees(limit)), 3, () => waiting || lower > 1.3 * limit);
+    hold(this.airlock, hour, () => settled && !this.waitsForWarmth && (blind ? CURVE_GAS_ROOM * this.gasByCurve() < limit : upper < limit && this.curveAgrees(limit)), 3, () => this.waitsForWarmth || lower > GAS_BAND * limit);
   }
 
   /** A day's line can fall behind a fermentation that warms itself: the curve must not say much more. */

@@ -8,6 +8,9 @@ export { LOOK_H } from './intake';
 /** Hours after the pitch at which a start is overdue. */
 export const OVERDUE_H: Record<BatchSetup['kind'], number> = { beer: 48, cider: 72, mead: 72, wine: 72 };
 
+/** Degrees outside its range from which it is too cold or too warm. */
+export const TEMPERATURE_MARGIN_C = 0.4;
+
 /** Hours between two judgements of a batch that rests ready for bottles, and how far its level may move meanwhile, points (ours). */
 const REST_LOOK_H = 12;
 const REST_POINTS = 0.8;
@@ -35,7 +38,17 @@ export class Watch extends Ending {
     this.watchSteps();
     this.watchFloat();
     if (this.og === null) this.guessOg();
+    this.judgeTemperature(hour);
     if (!this.restsStill(hour)) this.judge();
+  }
+
+  /** Out of its range by more than the margin, until it is back inside: at the limit it must not flicker. */
+  private judgeTemperature(hour: number): void {
+    const range = this.setup.temperature;
+    const now = range && this.track.temperature(hour - 3, hour);
+    if (!range || now === null) return;
+    hold(this.tooCold, hour, () => now < range.minC - TEMPERATURE_MARGIN_C, 1, () => now >= range.minC);
+    hold(this.tooWarm, hour, () => now > range.maxC + TEMPERATURE_MARGIN_C, 1, () => now <= range.maxC);
   }
 
   /** Ready for bottles, nothing about to begin and its level as it was: there is nothing to weigh at every look. */
@@ -127,6 +140,7 @@ export class Watch extends Ending {
     // A few hours are soon deceived by noise: they must say so twice.
     this.stirs = this.stuck.on && this.falls(8, 2.5) ? this.stirs + 1 : 0;
     const settled = this.quietSinceAddition(60, 120);
+    const wasStuck = this.stuck.on;
     // A few days' climb keeps from calling it stuck, but only a float that has drifted takes it back: about a level that stands a float swings.
     hold(
       this.stuck,
@@ -136,6 +150,8 @@ export class Watch extends Ending {
       () => level < limit - STUCK_BAND || this.drifting.on || ((this.falls(24, 1.64) || this.stirs > 1) && this.belowStall(level)),
     );
     if (this.stuck.on) this.stuckCold = this.coldNow();
+    // What begins to creep again is slow at once, and not as it should be for some looks.
+    const resumed = wasStuck && !this.stuck.on;
 
     const line48 = this.line(48);
     const rate = line48 ? -line48.slope : null;
@@ -144,7 +160,7 @@ export class Watch extends Ending {
       this.sluggish,
       hour,
       () => slow && this.quietSinceAddition(60, 96) && !this.quickens() && this.leavesAtLeast(7.5, level) && this.crawls(-line48.slope, level) && !this.mayClimb(),
-      3,
+      resumed ? 1 : 3,
       () => rate === null || rate > 2.6 || !this.peaked.on || this.stuck.on || this.drifting.on || !this.leavesAtLeast(5, level),
     );
   }

@@ -184,6 +184,31 @@ describe('the calls', () => {
     expect(calls.temperature).toMatchObject({ verdict: 'yes', kind: 'low' });
   });
 
+  it('leave the tube on what is only cold, and say what it may give once it is warm', () => {
+    const stopped = (day: number): number => Math.max(24, cider(day));
+    const cold = at(8, record(8, stopped, (day) => (day < 4 ? 19 : 8)), { volumeL: 20, vesselL: 20.4 }).calls.neck;
+    expect(cold).toMatchObject({ verdict: 'hold', headline: 'Leave the tube on: it is only cold.' });
+    expect(cold.reason).toMatch(/^Gas 0\.\d+ L\/h; warm again it may give [1-9]/);
+    expect(at(8, record(8, stopped), { volumeL: 20, vesselL: 20.4 }).calls.neck.verdict).toBe('yes');
+  });
+
+  it('call it too cold until it is back inside its range, and do not begin to at the limit', () => {
+    const falling = (celsius: number) => (day: number): number => (day < 3 ? 17 : day < 4 ? celsius : 14.8);
+    const noiseless = (celsius: number) => record(6, cider, falling(celsius)).map((reading, i) => ({ ...reading, temperature: Math.round(reading.temperature! * 5) / 5 + 0.001 * (i % 2) }));
+    expect(at(3.5, noiseless(14.2)).calls.temperature).toMatchObject({ verdict: 'yes', kind: 'low' });
+    expect(at(5.5, noiseless(14.2)).calls.temperature).toMatchObject({ verdict: 'yes', kind: 'low' });
+    expect(at(5.5, noiseless(14.8)).calls.temperature.verdict).toBe('no');
+  });
+
+  it('call slow what begins to creep again after a stall, not as it should be', () => {
+    const creeping = (day: number): number => Math.max(24, cider(day)) - 1.4 * Math.max(0, day - 9);
+    const readings = record(16, creeping);
+    const said = [...assessEvery(setup, readings, Array.from({ length: 40 }, (_, i) => PITCH + (8 + i / 8) * DAY), { picture: false })].map(({ assessment: { calls } }) => calls.stalled.kind ?? calls.stalled.verdict);
+    const stuck = said.lastIndexOf('stuck');
+    expect(stuck).toBeGreaterThan(0);
+    expect(said[stuck + 1]).toBe('sluggish');
+  });
+
   it('see a batch that works again after it was sweetened at rest', () => {
     const events: BatchEvent[] = [{ at: PITCH + 30 * DAY, kind: 'addition', sugarG: 90 }];
     const sweet = (day: number): number => (day < 30 ? cider(day) : cider(30) + 7.7 * Math.exp(-Math.max(0, day - 31) / 3));
