@@ -21,7 +21,8 @@ const CLOSE = 1e-5;
 const PEAK_STEPS = 60;
 
 const softplus = (z: number): number => (z > 30 ? z : Math.log1p(Math.exp(z)));
-const logistic = (z: number): number => 1 / (1 + Math.exp(-z));
+/** Beyond 37 it is 1 to the last digit. */
+const logistic = (z: number): number => (z > 37 ? 1 : 1 / (1 + Math.exp(-z)));
 
 export class KineticCurve {
   readonly og: number;
@@ -133,10 +134,8 @@ export class KineticCurve {
     return this.m + this.w * z;
   }
 
-  /** Gravity at τ; its derivatives by the six parameters go to out[at], out[at + stride], … */
-  gradient(tau: number, out: Float64Array, at: number, stride: number, solved = this.solve(tau)): number {
-    const x = solved;
-    const s = Math.exp(x);
+  /** Gravity at τ; its derivatives by the six parameters go to out[at], out[at + stride], … Where ln S and S are known already they need not be found again. */
+  gradient(tau: number, out: Float64Array, at: number, stride: number, x = this.solve(tau), s = Math.exp(x)): number {
     const { kr, delta, k, m, w } = this;
     const drop = this.og - this.fg;
     out[at] = s;
@@ -168,7 +167,9 @@ export class KineticCurve {
  * parameters, then mostly their derivatives at the same, for which it is solved already.
  */
 export class KineticRow {
+  /** ln S at each age, and S. */
   private readonly solved: Float64Array;
+  private readonly shares: Float64Array;
   private readonly parameters = new Float64Array(KINETIC_PARAMETERS);
   private curve: KineticCurve | null = null;
 
@@ -177,25 +178,31 @@ export class KineticRow {
     private readonly n: number,
   ) {
     this.solved = new Float64Array(n);
+    this.shares = new Float64Array(n);
   }
 
   private at(parameters: Float64Array): KineticCurve {
     if (this.curve && parameters.every((value, j) => value === this.parameters[j])) return this.curve;
     this.parameters.set(parameters);
     this.curve = new KineticCurve(parameters);
-    for (let i = 0; i < this.n; i += 1) this.solved[i] = this.curve.solve(this.tau[i]!);
+    const { solved, shares } = this;
+    for (let i = 0; i < this.n; i += 1) {
+      const x = this.curve.solve(this.tau[i]!);
+      solved[i] = x;
+      shares[i] = Math.exp(x);
+    }
     return this.curve;
   }
 
   /** Gravities, points, to out[0..n). */
   gravities(parameters: Float64Array, out: Float64Array): void {
     const { og, fg } = this.at(parameters);
-    for (let i = 0; i < this.n; i += 1) out[i] = fg + (og - fg) * Math.exp(this.solved[i]!);
+    for (let i = 0; i < this.n; i += 1) out[i] = fg + (og - fg) * this.shares[i]!;
   }
 
   /** Derivative of gravity i by parameter j, to out[j·stride + i]. */
   gradients(parameters: Float64Array, out: Float64Array, stride: number): void {
     const curve = this.at(parameters);
-    for (let i = 0; i < this.n; i += 1) curve.gradient(this.tau[i]!, out, i, stride, this.solved[i]!);
+    for (let i = 0; i < this.n; i += 1) curve.gradient(this.tau[i]!, out, i, stride, this.solved[i]!, this.shares[i]!);
   }
 }

@@ -53,7 +53,7 @@ export class Ending extends Peak {
     hold(
       this.bottle,
       hour,
-      () => still && !this.mayOnlyBeCold() && this.threeQuietDays() && this.leavesLess(this.bottlePoints()) && this.bothEndsSaySo(),
+      () => still && !this.mayOnlyBeCold() && this.leavesLess(this.bottlePoints()) && this.threeQuietDays() && this.bothEndsSaySo(),
       2,
       () => (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on || (slow && this.remainingNow() !== null && !this.leavesLess(less)),
     );

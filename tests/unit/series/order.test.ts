@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { median, medianInPlace, select } from '../../../lib/core/series/order';
+import { median, medianBetween, medianInPlace, select } from '../../../lib/core/series/order';
 
 /** A coarse float repeats its values: whole numbers make many equal ones. */
 const values = fc.oneof(
@@ -20,6 +20,15 @@ describe('order statistics', () => {
           if (i < k) expect(copy[i]).toBeLessThanOrEqual(found);
           else expect(copy[i]).toBeGreaterThanOrEqual(found);
         }
+      }),
+    );
+  });
+
+  it('finds the same median wherever it is looked for first', () => {
+    fc.assert(
+      fc.property(values, fc.double({ min: -60, max: 160, noNaN: true }), fc.double({ min: 0, max: 60, noNaN: true }), (list, about, reach) => {
+        const near = medianBetween(Float64Array.from(list), list.length, about - reach, about + reach);
+        expect(near - median(list)).toBe(0);
       }),
     );
   });
