@@ -56,31 +56,31 @@ export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; ti
           </div>
           <ul>
             {tastings.map((tasting) => (
-              <li key={tasting.id} className="border-b border-rule px-(--margin) py-2">
-                <p className="type-label flex flex-wrap gap-x-4 text-ink2">
-                  <span className="font-semibold text-ink">
-                    {tasting.by.name ?? 'somebody'}
-                    {tasting.by.guest && ', guest'}
-                  </span>
-                  <span>{dayWords(tasting.at, timeZone, now)}</span>
-                  {tasting.score !== null && <span className="text-ink">{tasting.score.toFixed(1)} of 10</span>}
-                  {ASPECTS.filter((aspect) => tasting[aspect] !== null).map((aspect) => (
-                    <span key={aspect}>
-                      {aspect} {tasting[aspect]}
+              <li key={tasting.id} className="flex items-end gap-4 border-b border-rule px-(--margin) py-2">
+                <div className="min-w-0 flex-1">
+                  <p className="type-label flex flex-wrap gap-x-4 text-ink2">
+                    <span className="font-semibold text-ink">
+                      {tasting.by.name ?? 'somebody'}
+                      {tasting.by.guest && ', guest'}
                     </span>
-                  ))}
-                  {tasting.sparkle && <span>{FOUND_WORDS[tasting.sparkle]}</span>}
-                </p>
-                {tasting.words && <p className="type-body break-words">{tasting.words}</p>}
-                {tasting.next_time && <p className="type-reason break-words text-ink2">Next time: {tasting.next_time}</p>}
-                <div className="flex flex-wrap items-end justify-between gap-x-4">
+                    <span>{dayWords(tasting.at, timeZone, now)}</span>
+                    {tasting.score !== null && <span className="text-ink">{tasting.score.toFixed(1)} of 10</span>}
+                    {ASPECTS.filter((aspect) => tasting[aspect] !== null).map((aspect) => (
+                      <span key={aspect}>
+                        {aspect} {tasting[aspect]}
+                      </span>
+                    ))}
+                    {tasting.sparkle && <span>{FOUND_WORDS[tasting.sparkle]}</span>}
+                  </p>
+                  {tasting.words && <p className="type-body break-words">{tasting.words}</p>}
+                  {tasting.next_time && <p className="type-reason break-words text-ink2">Next time: {tasting.next_time}</p>}
                   <Photos place={{ lot: lotId }} on={{ tasting: tasting.id }} own={tasting.by.id !== null && tasting.by.id === me?.person.id} />
-                  {tasting.mine && (
-                    <button type="button" onClick={() => void removeTasting(tasting.id)} className="type-label ml-auto min-h-8 text-ink2 underline underline-offset-4 max-strip:min-h-11">
-                      Take back
-                    </button>
-                  )}
                 </div>
+                {tasting.mine && (
+                  <button type="button" onClick={() => void removeTasting(tasting.id)} className="type-label min-h-8 shrink-0 text-ink2 underline underline-offset-4 max-strip:min-h-11">
+                    Take back
+                  </button>
+                )}
               </li>
             ))}
           </ul>

@@ -5,7 +5,7 @@ import { Membership, Person } from '@/db/models';
 import { hashPassword } from '@/lib/auth/passwords';
 import { removeMember } from '@/lib/services/cellars/members';
 import { beginSecondFactor, confirmSecondFactor } from '@/lib/services/people/second-factor';
-import { expectAccessible, expectNoSidewaysScroll, useBrowser } from '../support/browser';
+import { expectAccessible, expectNoSidewaysScroll, settled, useBrowser } from '../support/browser';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildCellar, buildMember } from '../support/factories';
 import { startHouse, type House } from '../support/house';
@@ -242,7 +242,7 @@ describe('the settings', () => {
       for (const path of PAGES) {
         await page.goto(`${house.web.url}/settings${path}`);
         await page.getByRole('heading', { level: 1 }).first().waitFor();
-        await page.waitForLoadState('networkidle').catch(() => undefined);
+        await settled(page);
         await expectAccessible(page);
         await expectNoSidewaysScroll(page);
       }

@@ -3,7 +3,7 @@ import type { Page } from 'playwright-core';
 import { Alert, Batch, Membership, Person } from '@/db/models';
 import { hashPassword } from '@/lib/auth/passwords';
 import { readingsTopic } from '@/lib/contracts/topics';
-import { expectAccessible, expectNoSidewaysScroll, useBrowser } from '../support/browser';
+import { expectAccessible, expectNoSidewaysScroll, settled, useBrowser } from '../support/browser';
 import { useDatabase } from '../support/database';
 import { signIn } from '../support/devices';
 import { buildCellar, buildMember, buildSensor } from '../support/factories';
@@ -187,8 +187,7 @@ describe('every screen', () => {
       const { items } = (await (await page.request.get(`${house.web.url}/api/v1/batches`)).json()) as { items: Array<{ id: string }> };
       await page.goto(`${house.web.url}/batches/${items[0]!.id}`);
     }
-    await page.getByRole('heading').first().waitFor();
-    await page.waitForLoadState('networkidle').catch(() => undefined);
+    await settled(page);
   }
 });
 

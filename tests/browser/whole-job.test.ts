@@ -2,7 +2,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Page } from 'playwright-core';
 import { Membership, Person, Place } from '@/db/models';
 import type { Role } from '@/lib/core/roles';
-import { expectAccessible, expectNoSidewaysScroll, tooLow, useBrowser } from '../support/browser';
+import { expectAccessible, expectNoSidewaysScroll, settled, tooLow, useBrowser } from '../support/browser';
 import { useDatabase } from '../support/database';
 import { buildCellar } from '../support/factories';
 import { startHouse, type House } from '../support/house';
@@ -258,8 +258,7 @@ describe('every screen of the job', () => {
     const { page, context } = await visit('brewer', { phone, night });
     for (const screen of screens()) {
       await page.goto(`${house.web.url}${screen}`);
-      await page.getByRole('heading').first().waitFor();
-      await page.waitForLoadState('networkidle').catch(() => undefined);
+      await settled(page);
       await expectAccessible(page);
       await expectNoSidewaysScroll(page);
     }

@@ -1,10 +1,20 @@
-import { AxeBuilder } from '@axe-core/playwright';
-import { chromium, type Browser, type BrowserContext, type Locator, type Page } from 'playwright-core';
+import { readFileSync } from 'node:fs';
+import { createRequire } from 'node:module';
+import type { AxeResults, RunOptions } from 'axe-core';
+import { chromium, type Browser, type BrowserContext, type Locator, type Page, type Request } from 'playwright-core';
 import { afterAll, beforeAll, expect } from 'vitest';
+import { until } from './processes';
 import { sessionCookie } from './web';
 
 /** Without these a headless Chromium looks for hosts that a test machine does not reach. */
 const FLAGS = ['--no-sandbox', '--disable-gpu', '--disable-quic', '--no-first-run', '--disable-background-networking', '--disable-component-update', '--disable-sync'];
+
+/** Run in the page itself and asked for what is wrong alone: no page here has frames, and the list of what is right takes longer than the finding. */
+const AXE = readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8');
+const RULES: RunOptions = { runOnly: { type: 'tag', values: ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa'] }, resultTypes: ['violations'] };
+
+/** Nothing asked for so long: what an answer brings asks at once. */
+const QUIET_MS = 150;
 
 export const DESK = { width: 1440, height: 900 };
 export const PHONE = { width: 390, height: 844 };
@@ -45,6 +55,19 @@ export function useBrowser() {
       if (message.type() === 'error') complaints.push(`${message.text()} ${message.location().url}`.trim());
     });
     page.on('pageerror', (error) => complaints.push(error.message));
+    const asked: Asked = { open: new Set(), last: Date.now() };
+    ASKED.set(page, asked);
+    page.on('request', (request) => {
+      // A page that is left takes along what it had asked for.
+      if (request.isNavigationRequest() && request.frame() === page.mainFrame()) asked.open.clear();
+      // The live line stays open.
+      if (request.resourceType() !== 'eventsource') asked.open.add(request);
+    });
+    const answered = (request: Request) => {
+      if (asked.open.delete(request)) asked.last = Date.now();
+    };
+    page.on('requestfinished', answered);
+    page.on('requestfailed', answered);
     return { context, page, complaints };
   }
 
@@ -60,10 +83,26 @@ export function useBrowser() {
   return { visit, visitAs };
 }
 
+interface Asked {
+  open: Set<Request>;
+  last: number;
+}
+const ASKED = new WeakMap<Page, Asked>();
+
+/** Waits until nothing is on its way any more: no request, no haze where something is loading, no font. */
+export async function settled(page: Page): Promise<void> {
+  const asked = ASKED.get(page)!;
+  await page.getByRole('heading').first().waitFor();
+  await until('the page to have all it asked for', async () => asked.open.size === 0 && Date.now() - asked.last > QUIET_MS && (await page.evaluate(() => document.fonts.status === 'loaded' && document.querySelector('main [role="status"][aria-label^="Loading"]') === null)), 30_000);
+}
+
 /** No serious or critical violation of WCAG A and AA on the page as it stands. */
 export async function expectAccessible(page: Page): Promise<void> {
-  // Without frames to gather from, axe needs no page of its own for it: half the time.
-  const { violations } = await new AxeBuilder({ page }).withTags(['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa']).setLegacyMode(true).analyze();
+  if (!(await page.evaluate(() => 'axe' in globalThis))) await page.evaluate(AXE);
+  const violations = await page.evaluate(async (options) => {
+    const { axe } = globalThis as unknown as { axe: { run: (options: RunOptions) => Promise<AxeResults> } };
+    return (await axe.run(options)).violations.map(({ id, impact, nodes }) => ({ id, impact, nodes: nodes.map(({ html }) => ({ html })) }));
+  }, RULES);
   const serious = violations.filter(({ impact }) => impact === 'serious' || impact === 'critical');
   expect(serious.map(({ id, nodes }) => `${id}: ${nodes.map((node) => node.html.slice(0, 160)).join(' | ')}`)).toEqual([]);
 }
