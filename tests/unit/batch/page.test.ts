@@ -39,7 +39,8 @@ describe('the line of facts', () => {
 
   it('gives the likely end as days, until it is reached or has passed', () => {
     expect(fact({}, 'likely end').figure).toBe('20–22 Oct');
-    expect(fact({ assessment: judged({}, { stage: 'terminal' }) }, 'likely end').figure).toBe('reached');
+    expect(fact({ assessment: judged({}, { stage: 'terminal' }) }, 'likely end')).toMatchObject({ figure: 'reached', more: null });
+    expect(fact({ assessment: judged({}, { stage: 'terminal', terminal_at: null }) }, 'likely end')).toMatchObject({ figure: 'reached', more: 'by its curve' });
     expect(fact({ assessment: judged({}, { terminal_at: { value: hours(-5), lo: hours(-9), hi: hours(-1) } }) }, 'likely end').figure).toBe('not known');
   });
 });
