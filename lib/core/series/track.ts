@@ -1,8 +1,9 @@
 import type { BatchEvent, BatchSetup, Instant, Reading } from '../types';
 import { appendBin, binFrom, GAP_H, newBins, type Bins } from './bins';
 import { robustLine, type Line } from './line';
-import { fitTail, type Tail } from './tail';
 import { medianInPlace, middleOf, select } from './order';
+import { Pinned } from './pinned';
+import { fitTail, type Tail } from './tail';
 
 export const HOUR_MS = 3_600_000;
 const USUAL_C = 20;
@@ -38,18 +39,13 @@ const lineG = new Float64Array(2048);
  * out, frozen stretches masked, thermal age, and the float's offset against the
  * hydrometer. It only ever grows; nothing in it looks past the hour it is asked for.
  */
-export class Track {
+export class Track extends Pinned {
   readonly bins: Bins = newBins();
   readonly corrections: Correction[] = [];
   /** Thermal age of each bin, days at 20 °C. */
   tau = new Float64Array(256);
-  /** Mean warmth factor of the last day, for forecasts. */
+  /** Steps taken out so far, points. */
   private pendingShift = 0;
-  /** Offset of the float, points at OG, and share of it that scales with gravity. */
-  private offset = 0;
-  private gain = 0;
-  private variance: [number, number, number] = [0.8 ** 2 + 0.3, 0, 0.012 ** 2];
-  private calibrated = false;
   /** Median spacing of the readings, h. */
   spacing = 1;
   private readings: Reading[] = [];
@@ -61,7 +57,9 @@ export class Track {
   constructor(
     readonly setup: BatchSetup,
     readonly origin: Instant,
-  ) {}
+  ) {
+    super();
+  }
 
   hourOf(at: Instant): number {
     return (at - this.origin) / HOUR_MS;
@@ -249,46 +247,6 @@ export class Track {
   warmthAt(hour: number): number {
     const temperature = this.temperature(hour - 24, hour);
     return warmth(temperature ?? this.usualC());
-  }
-
-  // Offset against the hydrometer.
-
-  /** A float level in points, as the hydrometer would show it. */
-  calibrate(points: number): number {
-    return points - this.offset - this.gain * points;
-  }
-
-  get isCalibrated(): boolean {
-    return this.calibrated;
-  }
-
-  /** Standard deviation of the calibrated level, points. */
-  calibrationSd(points: number): number {
-    const [a, b, c] = this.variance;
-    return Math.sqrt(Math.max(0, a + 2 * points * b + points * points * c));
-  }
-
-  /**
-   * Hydrometer reading beside a float level: a linear Gaussian update of offset
-   * and gain. Returns how far apart the two were before it.
-   */
-  pin(floatPoints: number, hydrometerPoints: number, sd: number): number {
-    const miss = floatPoints - hydrometerPoints - this.offset - this.gain * floatPoints;
-    const [a, b, c] = this.variance;
-    const pa = a + b * floatPoints;
-    const pb = b + c * floatPoints;
-    const s = pa + pb * floatPoints + sd * sd;
-    this.offset += (pa / s) * miss;
-    this.gain += (pb / s) * miss;
-    this.variance = [a - (pa * pa) / s, b - (pa * pb) / s, c - (pb * pb) / s];
-    this.calibrated = true;
-    return miss;
-  }
-
-  /** Lets the offset have drifted since the last pin. */
-  loosen(days: number): void {
-    const [a, b, c] = this.variance;
-    this.variance = [a + (0.04 * days) ** 2 + 0.3, b, c];
   }
 
   // Steps.
