@@ -1,5 +1,5 @@
 import { beforeAll, describe, expect, it } from 'vitest';
-import { catalogue, GROUPS, MISTOLD_GROUPS, PITCHED } from './catalogue';
+import { catalogue, GROUPS, makeCase, MISTOLD_GROUPS, PITCHED } from './catalogue';
 import { naiveLooks } from './naive';
 import { pictures } from './plots';
 import { summarise, tables, type Summary } from './report';
@@ -95,5 +95,15 @@ describe('the catalogue', () => {
     const [other] = [...catalogue(6, [['healthy beer', 1]])];
     expect(same!.readings).toEqual(one!.readings);
     expect(other!.readings[0]!.gravity).not.toBe(one!.readings[0]!.gravity);
+  });
+
+  it('holds for stuck what ends by itself with much sugar left, and for ended what has eaten it', () => {
+    const tired = makeCase('slow tail', 0, 12);
+    expect(tired.finals[0]!.points).toBeLessThan(tired.truth.gravity.at(-1)! - 30);
+    const truths = new Truths(tired);
+    expect(truths.moments('stuck')).toHaveLength(1);
+    expect(truths.moments('ready to bottle')).toEqual([]);
+    const ended = makeCase('healthy beer', 0, 12);
+    expect(ended.finals[0]!.points).toBe(ended.truth.gravity.at(-1));
   });
 });

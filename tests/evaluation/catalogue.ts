@@ -332,13 +332,32 @@ function bend(group: string, d: Draft, r: Random, volumeL: number, heatLossH: nu
   }
 }
 
-/** What each stretch could reach: the batch itself in the long run, or its well twin where it was spoilt. */
+/** Gravity, points, once all the sugar of a must, and what was added to it in g/L, has gone. */
+function dryOf(must: Must, yeast: Yeast, added = 0): number {
+  const sugar = must.sugars[0] + must.sugars[1] + must.sugars[2] + added;
+  return pointsFrom(must.rest + 0.03 * sugar, yeast.ethanolYield * sugar);
+}
+
+/** The alcohol has come near what its yeast bears, and brought it to its end. */
+const endsByAlcohol = (d: Draft, truth: Truth): boolean => truth.ethanol[truth.ethanol.length - 1]! > 0.9 * d.yeast.ethanolStop;
+
+/** More sugar than this left by yeast that could still bear the alcohol, in points, is no end but a stall. */
+const LEFT_BY_A_STALL = 6;
+
+/**
+ * What each stretch could reach: the batch itself in the long run, its well twin where it was
+ * spoilt, and all its sugar where its own yeast tired with much of it left.
+ */
 function finalsOf(d: Draft, heatLossH: number, truth: Truth): { from: number; points: number }[] {
   const source = d.twin ?? { yeast: d.yeast, must: d.must, ambient: d.ambient };
   const sugary = d.truthEvents.filter((event) => event.sugar || event.slowSugar);
   const killed = d.truthEvents.some((event) => event.kill);
   return [0, ...sugary.map((event) => event.hour)].map((from, k) => {
-    if (!d.twin && !killed && k === sugary.length) return { from, points: finalOf(truth) };
+    if (!d.twin && !killed && k === sugary.length) {
+      const dry = dryOf(d.must, d.yeast, sugary.reduce((sum, event) => sum + (event.sugar ?? 0) + (event.slowSugar ?? 0), 0));
+      const stalls = !endsByAlcohol(d, truth) && finalOf(truth) > dry + LEFT_BY_A_STALL;
+      return { from, points: stalls ? dry : finalOf(truth) };
+    }
     const events = killed ? [] : d.truthEvents.filter((event) => event.hour <= from && (event.hour > 0 || k > 0));
     return { from, points: finalOf(ferment(source.yeast, source.must, LONG_H, source.ambient, heatLossH, events)) };
   });
@@ -352,14 +371,12 @@ function lastOf(truth: Truth, finals: { from: number; points: number }[], r: Ran
 }
 
 function told(d: Draft, truth: Truth, og: number, volumeL: number, vesselL: number, r: Random): BatchSetup {
-  const sugar = d.must.sugars[0] + d.must.sugars[1] + d.must.sugars[2];
   const source = d.twin ?? d;
-  const dry = pointsFrom(d.must.rest + 0.03 * sugar, source.yeast.ethanolYield * sugar);
-  const attenuation = 1 - dry / og;
+  const attenuation = 1 - dryOf(d.must, source.yeast) / og;
   const half = r.between(0.03, 0.06);
   const mid = attenuation + r.normal(0, 0.7 * half);
   const most = truth.ethanol[truth.ethanol.length - 1]!;
-  const limited = most > 0.9 * d.yeast.ethanolStop && !d.twin;
+  const limited = endsByAlcohol(d, truth) && !d.twin;
   const tolerance = d.toleranceTold ?? (limited ? most / 7.89 + r.normal(0, 0.6) : source.yeast.ethanolStop / 7.89 + r.normal(0, 0.6));
   return {
     kind: d.kind,

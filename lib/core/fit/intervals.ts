@@ -11,7 +11,7 @@ import type { DrinkKind } from '../types';
 const PROGRESS_EDGES = [0.15, 0.4, 0.65, 0.85, 0.95];
 
 const FACTOR_80 = [1, 1, 1, 1, 1.02, 1.45];
-const FACTOR_95 = [1.2, 1.2, 1.2, 1.2, 1.8, 3.0];
+const FACTOR_95 = [1.15, 1.15, 1.15, 1.15, 1.8, 3.0];
 /** Half width of the 80 % interval of ln(time to the end + 12 h). */
 const DATE_80 = [0.87, 0.61, 0.62, 0.62, 0.69, 1.2];
 /** How late a curve and a tail are, by kind: from where the tail is asked for a beer and a cider; else where the yeast has alcohol to spare, and at its limit (about the middles on the tuning seeds). */
