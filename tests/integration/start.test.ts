@@ -36,7 +36,8 @@ class Start {
 
   async ready(): Promise<void> {
     const deadline = Date.now() + PATIENCE_MS;
-    while (!/^Ready: /m.test(this.output)) {
+    // The last line: what stands above it has been read by then.
+    while (!/^Ready: [^]*Ctrl-C stops everything/m.test(this.output)) {
       if (this.child.exitCode !== null || Date.now() > deadline) throw new Error(`The start did not get ready:\n${this.output}`);
       await new Promise((next) => setTimeout(next, 100));
     }
