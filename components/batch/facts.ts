@@ -70,10 +70,10 @@ export function factsOf(batch: BatchBody, last: LastReading | null | undefined, 
     { name: 'strength so far', figure: judged?.abv_percent ? percent(judged.abv_percent.value) : '–', more: judged?.expected_abv_percent ? `of ${judged.expected_abv_percent.value.toFixed(1)}` : null, phone: true },
     {
       name: 'likely end',
-      ...(judging && { arriving: true }),
-      figure: judging ? '–' : judged?.stage === 'terminal' ? 'reached' : end && seconds(end.hi) > now ? dayRange(seconds(end.lo), seconds(end.hi), timeZone) : 'not known',
+      figure: judged?.stage === 'terminal' ? 'reached' : end && seconds(end.hi) > now ? dayRange(seconds(end.lo), seconds(end.hi), timeZone) : 'not known',
       // Ended while its float gave nothing: nobody saw it.
-      more: !judging && judged?.stage === 'terminal' && end === null ? 'by its curve' : null,
+      more: judged?.stage === 'terminal' && end === null ? 'by its curve' : null,
+      ...(judging && ARRIVING),
       phone: false,
     },
     { name: 'sensor', figure: batch.sensor?.name ?? 'none', more: heard ? `heard ${now - seconds(heard) < 43_200 ? clock(seconds(heard), timeZone) : when(seconds(heard), now, timeZone)}` : batch.sensor ? 'not heard yet' : null, phone: false },

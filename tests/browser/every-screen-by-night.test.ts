@@ -1,17 +1,11 @@
 import type { Page } from 'playwright-core';
-import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { describe, expect, it } from 'vitest';
 import { batchState } from '@/db/queries/batch-states';
-import type { Actor } from '@/lib/auth/policies';
 import type { AssessmentBody } from '@/lib/contracts/assessment';
 import { assessBatch } from '@/lib/services/batches/assess';
-import { settled, useBrowser } from '../support/browser';
+import { settled } from '../support/browser';
 import { ciderAt } from '../support/cellar';
-import { useDatabase } from '../support/database';
-import { buildMember } from '../support/factories';
-import type { Things } from '../support/role-rows';
-import { SCREENS, walkScreens } from '../support/screens';
-import { things } from '../support/things';
-import { startWeb, type Web } from '../support/web';
+import { SCREENS, useFullHouse, walkScreens } from '../support/screens';
 
 /** Screens of the job, from the must to the opened bottle: what they reckon can be asked how. */
 const RECKONS = ['shelf', 'rounds', 'batches/[id]', 'batches/[id]/work', 'bench/[id]', 'book', 'book/[id]', 'labels', 'compare', 'musts', 'musts/[id]'];
@@ -39,23 +33,12 @@ const unasked = (page: Page): Promise<string[]> =>
   );
 
 describe('every screen, at a desk by night', () => {
-  const db = useDatabase();
-  const browser = useBrowser();
-  let web: Web;
-  let keeper: Actor;
-  let there: Things;
-  beforeAll(async () => {
-    web = await startWeb({ databaseUrl: db.url });
-    keeper = await buildMember('keeper');
-    there = await things(keeper.cellarId, keeper.personId);
-  }, 700_000);
-  afterAll(async () => {
-    await web?.stop();
-  });
+  const { browser, house } = useFullHouse();
 
-  it('has no serious barrier, nothing wider than it is and nothing to complain of', () => walkScreens(browser, { web, keeper, there }, { night: true }), 600_000);
+  it('has no serious barrier, nothing wider than it is and nothing to complain of', () => walkScreens(browser, house, { night: true }), 600_000);
 
   it('answers how for every figure that it reckons', async () => {
+    const { web, keeper, there } = house;
     const { page, context } = await browser.visitAs(keeper.personId, web.url, {});
     const seen = new Set<string>();
     for (const screen of RECKONS) {
@@ -70,6 +53,7 @@ describe('every screen, at a desk by night', () => {
   }, 300_000);
 
   it('answers for a job with what its call was held to, and for a row of the book as the lot itself does', async () => {
+    const { web, keeper, there } = house;
     const cellar = { ...keeper, role: 'brewer' } as const;
     const done = await ciderAt(cellar, { now: Date.now(), readDaysAgo: [30, 20, 12, 9, 5, 1], batch: { name: 'Perry' } });
     await assessBatch(done.id);

@@ -1,5 +1,6 @@
 import type { Call, Evidence, Foam } from '../types';
 import { gasLPerH } from '../gas/gas';
+import { GAS_BAND } from '../stages/peak';
 import { foamSeen, standsHigh, type SeenFoam } from './foam';
 import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, gasWords } from './words';
@@ -12,7 +13,7 @@ export function neckCall(scene: Scene): Call {
   const changesIt = `Changes it: gas ${gasWords(limit)} for nine hours.`;
   const foam = foamSeen(watch.setup.events, scene.at);
   if (watch.neck === 'airlock' || watch.neck === 'bung') {
-    const busy = gas !== null && gas.lo > 1.3 * limit;
+    const busy = gas !== null && gas.lo > GAS_BAND * limit;
     if (foam?.foam === 'at_neck') {
       return call('hold', 'Foam is at the airlock.', `${foamWords(scene, foam)}${gas ? ` Gas ${gasWords(gas.value)}.` : ''}`, { since: foam.at, evidence: figures, act: 'Put the blow-off tube back on.', changesIt: 'Changes it: foam down to a ring.' });
     }
@@ -36,7 +37,7 @@ export function neckCall(scene: Scene): Call {
       since,
       evidence: figures,
       act: gas ? 'Swap the tube for an airlock with water in it.' : 'Look at the foam, then swap the tube for an airlock with water in it.',
-      changesIt: `Changes it: gas over ${gasWords(1.3 * limit)}.`,
+      changesIt: `Changes it: gas over ${gasWords(GAS_BAND * limit)}.`,
     });
   }
   if (!watch.started.on) {

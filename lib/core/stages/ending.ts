@@ -3,10 +3,10 @@ import { hold, never } from './latch';
 import { CURVE_PAST_DAYS, Peak } from './peak';
 
 /** Points that may still come, nine times in ten, when a batch may be racked and when it is called finished. */
-const RACK_POINTS = 4.4;
+export const RACK_POINTS = 4.4;
 const TERMINAL_POINTS = 1.9;
 /** The same where the end of the record says so by itself, while a curve that goes too deep still holds back (ours). */
-const RACK_TAIL_POINTS = 3;
+export const RACK_TAIL_POINTS = 3;
 /** Points left by the curve alone, at half its pace, when a batch may be racked whose float gives nothing, and when it is taken to have ended (ours). */
 const RACK_BLIND_POINTS = 2.5;
 const ENDED_BLIND_POINTS = 1;

@@ -11,7 +11,7 @@ const CURVE_GAS_ROOM = 1.5;
 const CURVE_GAS_SLACK = 1.5;
 
 /** By how much the gas must be over the limit to take a swap back: at the limit it must not flicker (ours). */
-const GAS_BAND = 1.3;
+export const GAS_BAND = 1.3;
 
 /** Hours that a cold vessel may need to work as it could, once it is warm again (ours). */
 const WARMING_H = 60;
