@@ -1,4 +1,4 @@
-import { medianBetween, medianInPlace } from './order';
+import { medianBetween, medianInPlace, middleTwo } from './order';
 
 /** A straight line through a stretch of gravity, with an honest standard error. */
 export interface Line {
@@ -111,20 +111,27 @@ function blockMedians(g: Float64Array, from: number, x: Float64Array, n: number,
   let lo = 0;
   for (let i = 0; i < blocks; i += 1) {
     const hi = Math.floor(((i + 1) * n) / blocks);
+    const size = hi - lo;
     let sum = 0;
-    for (let j = lo; j < hi; j += 1) {
-      sum += x[j]!;
-      scratch[j - lo] = g[from + j]!;
+    for (let j = lo; j < hi; j += 1) sum += x[j]!;
+    blockT[i] = sum / size;
+    const first = from + lo;
+    if (size === 1) blockG[i] = g[first]!;
+    else if (size === 2) blockG[i] = (g[first]! + g[first + 1]!) / 2;
+    else if (size === 4) blockG[i] = middleTwo(g[first]!, g[first + 1]!, g[first + 2]!, g[first + 3]!);
+    else {
+      for (let j = 0; j < size; j += 1) scratch[j] = g[first + j]!;
+      blockG[i] = medianInPlace(scratch, 0, size);
     }
-    blockT[i] = sum / (hi - lo);
-    blockG[i] = hi - lo === 1 ? scratch[0]! : medianInPlace(scratch, 0, hi - lo);
     lo = hi;
   }
   return blocks;
 }
 
-/** Median slope of all pairs of blocks; NaN where none are apart in time. `weight` is the number of points of a block. */
+/** Median slope of the pairs of blocks; NaN where none are apart in time. `weight` is the number of points of a block. */
 function medianSlope(blocks: number, weight: number): number {
+  // Neighbours tell little of a slope; with few blocks every pair counts.
+  const apart = blocks < BLOCKS ? 1 : BLOCKS / 4;
   let pairs = 0;
   let st = 0;
   let sg = 0;
@@ -133,7 +140,7 @@ function medianSlope(blocks: number, weight: number): number {
   for (let i = 0; i < blocks; i += 1) {
     const ti = blockT[i]!;
     const gi = blockG[i]!;
-    for (let j = i + 1; j < blocks; j += 1) {
+    for (let j = i + apart; j < blocks; j += 1) {
       const dt = blockT[j]! - ti;
       slopes[pairs] = (blockG[j]! - gi) / dt;
       pairs += Number(dt > 0);
@@ -153,7 +160,8 @@ function medianSlope(blocks: number, weight: number): number {
 
 /**
  * Robust line through g[from..to) against t (h, ascending). Starts from
- * Theil–Sen on 12 block medians (Sen 1968), then four Huber re-weightings;
+ * Theil–Sen on 12 block medians (Sen 1968; of its pairs those that are
+ * three blocks apart), then four Huber re-weightings;
  * points beyond six sigmas and half a point count nothing. The standard error is
  * inflated for autocorrelation and is never under 0.05 points a day. Null with fewer than five points or none
  * of them apart in time.

@@ -100,3 +100,8 @@ export function median(values: ArrayLike<number>): number {
 export function middleOf(a: number, b: number, c: number): number {
   return Math.max(Math.min(a, b), Math.min(Math.max(a, b), c));
 }
+
+/** Median of four: the mean of the middle two. */
+export function middleTwo(a: number, b: number, c: number, d: number): number {
+  return (Math.max(Math.min(a, b), Math.min(c, d)) + Math.min(Math.max(a, b), Math.max(c, d))) / 2;
+}

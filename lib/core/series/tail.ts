@@ -41,6 +41,8 @@ interface Line2 {
   a: number;
   b: number;
   bb: number;
+  /** Weighted sum of the squares of what is left. */
+  rest: number;
 }
 
 /** Weighted least squares of g on 1 and the basis. */
@@ -50,6 +52,7 @@ function solve(g: Float64Array, from: number, n: number): Line2 | null {
   let sg = 0;
   let sff = 0;
   let sfg = 0;
+  let sgg = 0;
   const g0 = g[from]!;
   for (let i = 0; i < n; i += 1) {
     const w = weights[i]!;
@@ -60,11 +63,13 @@ function solve(g: Float64Array, from: number, n: number): Line2 | null {
     sg += w * y;
     sff += w * f * f;
     sfg += w * f * y;
+    sgg += w * y * y;
   }
   const det = sw * sff - sf * sf;
   if (!(det > 1e-12 * sw * sff)) return null;
   const b = (sw * sfg - sf * sg) / det;
-  return { a: g0 + (sg - b * sf) / sw, b, bb: sw / det };
+  const a = (sg - b * sf) / sw;
+  return { a: g0 + a, b, bb: sw / det, rest: Math.max(0, sgg - a * sg - b * sfg) };
 }
 
 /**
@@ -132,13 +137,8 @@ export function fitTail(t: Float64Array, g: Float64Array, from: number, to: numb
     basis.set(kept.subarray(0, n));
     const fit = solve(g, from, n);
     if (!fit) continue;
-    let sum = 0;
-    for (let i = 0; i < n; i += 1) {
-      const r = g[from + i]! - fit.a - fit.b * basis[i]!;
-      sum += weights[i]! * r * r;
-    }
     const z = Math.log(multiple / median) / PACE_SPREAD;
-    const cost = sum / (2 * variance) + (z * z) / 2;
+    const cost = fit.rest / (2 * variance) + (z * z) / 2;
     best = Math.min(best, cost);
     found.push({ b: fit.b, v: variance * fit.bb, cost, lambda });
   }

@@ -30,6 +30,9 @@ export interface Correction {
   why: 'racking' | 'moved' | 'sugar';
 }
 
+/** Readings whose spacing is looked at; anew once half of them are new. */
+const SPACINGS = 60;
+
 const scratch = new Float64Array(2048);
 const lineT = new Float64Array(2048);
 const lineG = new Float64Array(2048);
@@ -75,8 +78,9 @@ export class Track extends Pinned {
     while (this.taken < readings.length && readings[this.taken]!.at < until) {
       const from = this.taken;
       const hour = Math.floor(this.hourOf(readings[from]!.at));
+      const end = Math.min(until, this.origin + (hour + 1) * HOUR_MS);
       let to = from + 1;
-      while (to < readings.length && readings[to]!.at < until && Math.floor(this.hourOf(readings[to]!.at)) === hour) to += 1;
+      while (to < readings.length && readings[to]!.at < end) to += 1;
       const { bins } = this;
       appendBin(bins, readings, from, to, hour, this.origin);
       const i = bins.n - 1;
@@ -85,7 +89,7 @@ export class Track extends Pinned {
       this.taken = to;
       this.sinceMeasured += to - from;
     }
-    if (this.sinceMeasured >= Math.min(12, this.taken / 2)) this.measureSpacing();
+    if (this.sinceMeasured >= Math.min(SPACINGS / 2, this.taken / 2)) this.measureSpacing();
   }
 
   private age(i: number): void {
@@ -106,12 +110,12 @@ export class Track extends Pinned {
     return range ? (range.minC + range.maxC) / 2 : USUAL_C;
   }
 
-  /** Spacing of the last 60 readings; it decides how long a silence is long, and whether the record is one read by hand. */
+  /** Spacing of the last readings; it decides how long a silence is long, and whether the record is one read by hand. */
   private measureSpacing(): void {
     const n = this.taken;
     if (n < 2) return;
     this.sinceMeasured = 0;
-    const from = Math.max(1, n - 60);
+    const from = Math.max(1, n - SPACINGS);
     for (let i = from; i < n; i += 1) scratch[i - from] = (this.readings[i]!.at - this.readings[i - 1]!.at) / HOUR_MS;
     this.spacing = medianInPlace(scratch, 0, n - from);
   }

@@ -83,6 +83,10 @@ export class Figures {
   private levelMemo: number | null | undefined;
   private coldMemo: boolean | undefined;
   private fitCache: { key: number; fit: CurveFit | null } | null = null;
+  /** The last fit that the rules asked for: where the next one begins. What a reader asks for between two looks must not move it. */
+  private lastFit: { segment: Segment; fit: CurveFit | null } | null = null;
+  /** The rules are being applied. */
+  protected ruling = false;
   private priorCache: { segment: Segment; prior: Normal } | null = null;
 
   constructor(
@@ -176,12 +180,15 @@ export class Figures {
   fit(): CurveFit | null {
     const step = this.lookedAt < 240 ? 6 : this.lookedAt < 720 ? 12 : 24;
     const at = Math.floor(this.lookedAt / step + 1e-9) * step;
-    if (this.fitCache && this.fitCache.key === at) return this.fitCache.fit;
-    const { segment } = this;
-    if (segment.effectiveOg < 5) return null;
-    const og: Normal = { mean: segment.level ?? segment.effectiveOg, sd: segment.restarted ? 2 : this.ogSd };
-    const fit = fitSegment(this.setup, this.track, segment, at, this.fgPrior(), og);
-    this.fitCache = { key: at, fit };
+    if (this.fitCache?.key !== at) {
+      const { segment } = this;
+      if (segment.effectiveOg < 5) return null;
+      const og: Normal = { mean: segment.level ?? segment.effectiveOg, sd: segment.restarted ? 2 : this.ogSd };
+      const start = this.lastFit?.segment === segment ? this.lastFit.fit?.parameters : undefined;
+      this.fitCache = { key: at, fit: fitSegment(this.setup, this.track, segment, at, this.fgPrior(), og, start) };
+    }
+    const { fit } = this.fitCache;
+    if (this.ruling) this.lastFit = { segment: this.segment, fit };
     return fit;
   }
 

@@ -39,7 +39,9 @@ export class Watch extends Ending {
     this.watchFloat();
     if (this.og === null) this.guessOg();
     this.judgeTemperature(hour);
+    this.ruling = true;
     if (!this.restsStill(hour)) this.judge();
+    this.ruling = false;
   }
 
   /** Out of its range by more than the margin, until it is back inside: at the limit it must not flicker. */
@@ -167,7 +169,10 @@ export class Watch extends Ending {
 
   /** Two or three days that hardly fall, of a batch that has fallen before. */
   private liesFlat(level: number): boolean {
-    if (!slowerThan(this.line(48), 0.5, 0.75) && !slowerThan(this.line(72), 0.35, 0.5)) return false;
+    const two = this.line(48);
+    // Two days that surely fall are not outweighed by a third that did not.
+    if (two && -two.slope - 1.64 * two.se > 0.5) return false;
+    if (!slowerThan(two, 0.5, 0.75) && !slowerThan(this.line(72), 0.35, 0.5)) return false;
     return this.lookedAt - (this.started.since ?? this.lookedAt) > 96 || this.progress(level) > 0.12;
   }
 

@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { median, medianBetween, medianInPlace, select } from '../../../lib/core/series/order';
+import { median, medianBetween, medianInPlace, middleTwo, select } from '../../../lib/core/series/order';
 
 /** A coarse float repeats its values: whole numbers make many equal ones. */
 const values = fc.oneof(
@@ -29,6 +29,15 @@ describe('order statistics', () => {
       fc.property(values, fc.double({ min: -60, max: 160, noNaN: true }), fc.double({ min: 0, max: 60, noNaN: true }), (list, about, reach) => {
         const near = medianBetween(Float64Array.from(list), list.length, about - reach, about + reach);
         expect(near - median(list)).toBe(0);
+      }),
+    );
+  });
+
+  it('finds the median of four without putting them in order', () => {
+    const number = fc.double({ min: -1e3, max: 1e3, noNaN: true });
+    fc.assert(
+      fc.property(number, number, number, number, (a, b, c, d) => {
+        expect(middleTwo(a, b, c, d) - median([a, b, c, d])).toBe(0);
       }),
     );
   });
