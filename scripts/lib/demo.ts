@@ -67,7 +67,7 @@ export async function seedDemo(sequelize: Sequelize, now: number): Promise<Seede
 }
 
 async function writeHousehold(timeZone: string, passwordHash: string, since: Date, transaction: Transaction): Promise<Household> {
-  const cellar = await Cellar.create({ name: DEMO_CELLAR_NAME, timeZone }, { transaction });
+  const cellar = await Cellar.create({ name: DEMO_CELLAR_NAME, timeZone, currency: 'EUR' }, { transaction });
   const people = new Map<string, string>();
   const actors = new Map<Role, Actor>();
   for (const { name, email, role } of DEMO_PEOPLE) {

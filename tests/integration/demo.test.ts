@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { todaysJobs } from '@/components/shelf/jobs';
 import { database } from '@/db/client';
-import { Batch, Membership } from '@/db/models';
+import { Batch, Cellar, Membership } from '@/db/models';
 import { ManualClock } from '@/lib/clock';
 import { jobQuery } from '@/lib/contracts/jobs';
 import { assessBatch } from '@/lib/services/batches/assess';
@@ -20,6 +20,8 @@ describe('the demo as it opens', () => {
     const clock = new ManualClock(OPENS);
     await seedDemo(database(), OPENS);
     for (const batch of await Batch.findAll({ where: { endedAt: null } })) await assessBatch(batch.id, { clock, silenceCounts: true });
+    // What its batches cost is said in a currency, as the cellar's settings have it.
+    expect((await Cellar.findOne({ rejectOnEmpty: true })).currency).toBe('EUR');
     const { cellarId, personId, role } = await Membership.findOne({ where: { role: 'hand' }, rejectOnEmpty: true });
     const hand = { cellarId, personId, role };
     const { items } = await listJobs(hand, jobQuery.parse({ limit: '200' }), clock);
