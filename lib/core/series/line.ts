@@ -128,10 +128,8 @@ function blockMedians(g: Float64Array, from: number, x: Float64Array, n: number,
   return blocks;
 }
 
-/** Median slope of the pairs of blocks; NaN where none are apart in time. `weight` is the number of points of a block. */
+/** Median slope of all pairs of blocks; NaN where none are apart in time. `weight` is the number of points of a block. */
 function medianSlope(blocks: number, weight: number): number {
-  // Neighbours tell little of a slope; with few blocks every pair counts.
-  const apart = blocks < BLOCKS ? 1 : BLOCKS / 4;
   let pairs = 0;
   let st = 0;
   let sg = 0;
@@ -140,7 +138,7 @@ function medianSlope(blocks: number, weight: number): number {
   for (let i = 0; i < blocks; i += 1) {
     const ti = blockT[i]!;
     const gi = blockG[i]!;
-    for (let j = i + apart; j < blocks; j += 1) {
+    for (let j = i + 1; j < blocks; j += 1) {
       const dt = blockT[j]! - ti;
       slopes[pairs] = (blockG[j]! - gi) / dt;
       pairs += Number(dt > 0);
@@ -160,8 +158,7 @@ function medianSlope(blocks: number, weight: number): number {
 
 /**
  * Robust line through g[from..to) against t (h, ascending). Starts from
- * Theil–Sen on 12 block medians (Sen 1968; of its pairs those that are
- * three blocks apart), then four Huber re-weightings;
+ * Theil–Sen on 12 block medians (Sen 1968), then four Huber re-weightings;
  * points beyond six sigmas and half a point count nothing. The standard error is
  * inflated for autocorrelation and is never under 0.05 points a day. Null with fewer than five points or none
  * of them apart in time.
