@@ -148,10 +148,8 @@ export class KineticCurve {
     const e = d + delta * s;
     const l = Math.log1p(-delta * (1 - s));
     const z = (tau - m) / w;
-    // Softplus and logistic of one z share their exponential.
-    const grown = Math.exp(z);
-    const rise = (z > 30 ? z : Math.log1p(grown)) - this.base;
-    const byM = 0.18 * rise - (z > 30 ? 1 : grown / (1 + grown)) * (1 + 0.18 * z) + this.baseByM;
+    const rise = softplus(z) - this.base;
+    const byM = 0.18 * rise - logistic(z) * (1 + 0.18 * z) + this.baseByM;
     const byX = (kr + s) / e;
     const f = -(drop * s) / byX;
     const lByDelta = -(1 - s) / e;

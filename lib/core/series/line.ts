@@ -116,6 +116,7 @@ function blockMedians(g: Float64Array, from: number, x: Float64Array, n: number,
     for (let j = lo; j < hi; j += 1) sum += x[j]!;
     blockT[i] = sum / size;
     const first = from + lo;
+    // Lines of one day and of two are asked at every look: theirs need no sort.
     if (size === 1) blockG[i] = g[first]!;
     else if (size === 2) blockG[i] = (g[first]! + g[first + 1]!) / 2;
     else if (size === 4) blockG[i] = middleTwo(g[first]!, g[first + 1]!, g[first + 2]!, g[first + 3]!);
