@@ -1,4 +1,5 @@
 import { VOLUMES_PER_POINT } from '../gas/gas';
+import type { Line } from '../series/line';
 import { hold, never } from './latch';
 import { CURVE_PAST_DAYS, Peak } from './peak';
 
@@ -42,9 +43,9 @@ export class Ending extends Peak {
 
     if (this.terminal.on) hold(this.rack, hour, () => true, 2, never);
     else if (!this.isBlind()) {
-      const pace = Math.min(...[this.line(12), line24].map((line) => (line ? -line.slope : Number.POSITIVE_INFINITY)));
-      const asked = near && !sugary && pace < RACK_PACE && this.quietSinceAddition(60, 120);
-      hold(this.rack, hour, () => asked && this.leavesLittle(), 2, () => line24 !== null && -line24.slope - 1.64 * line24.se > RACK_PACE);
+      const calm = (line: Line | null): boolean => line !== null && -line.slope < RACK_PACE;
+      const asked = near && !sugary && this.quietSinceAddition(60, 120);
+      hold(this.rack, hour, () => asked && (calm(line24) || calm(this.line(12))) && this.leavesLittle(), 2, () => line24 !== null && -line24.slope - 1.64 * line24.se > RACK_PACE);
     }
 
     const still = slow && inside && upper48 < BOTTLE_PACE && !this.rising.on && !this.refermenting.on && !sugary && this.quietSinceAddition(120, 168);

@@ -88,25 +88,36 @@ export class Peak extends Intake {
   protected judgeAirlock(hour: number): void {
     this.waitsForWarmth = false;
     if (!this.peaked.on || (this.airlock.on && this.terminal.on)) return;
-    // Any window bounds the present rate from above while it falls; the sharpest one wins.
-    let upper = Number.POSITIVE_INFINITY;
-    let lower = Number.NEGATIVE_INFINITY;
-    // Once it is on, only its release is asked for.
-    for (const window of this.airlock.on ? [12] : [12, 18, 24]) {
-      const line = this.line(window);
-      if (!line) continue;
-      if (line.slope > 1.5) continue;
-      upper = Math.min(upper, gasLPerH(-line.slope + 1.15 * line.se, this.setup.volumeL));
-      if (window === 12 || lower === Number.NEGATIVE_INFINITY) lower = gasLPerH(-line.slope - 1.64 * line.se, this.setup.volumeL);
-    }
     const limit = this.swapGas();
-    // A float that is stuck or silent leaves what it told before.
-    const blind = this.frozen !== null || upper === Number.POSITIVE_INFINITY;
     const cold = this.lastCold !== null && hour - this.lastCold < WARMING_H;
     this.waitsForWarmth = cold && this.gasIfWarmed() > (this.airlock.on ? GAS_BAND : 1) * limit;
     // Fresh sugar is not at its strongest at once, and yeast that had come to rest wakes slowly.
     const settled = this.quietSinceAddition(this.sweetened ? 72 : 24, 72);
-    hold(this.airlock, hour, () => settled && !this.waitsForWarmth && (blind ? CURVE_GAS_ROOM * this.gasByCurve() < limit : upper < limit && this.curveAgrees(limit)), 3, () => this.waitsForWarmth || lower > GAS_BAND * limit);
+    hold(this.airlock, hour, () => settled && !this.waitsForWarmth && this.gasIsWeak(limit), 3, () => this.waitsForWarmth || this.gasReturns(GAS_BAND * limit));
+  }
+
+  /** Under the limit by a line of the last day, and not much over it by the curve; by the curve alone where the float gives nothing. */
+  private gasIsWeak(limit: number): boolean {
+    // Any window bounds the present rate from above while it falls; the sharpest one wins.
+    let most = Number.POSITIVE_INFINITY;
+    for (const window of this.airlock.on ? [12] : [12, 18, 24]) most = Math.min(most, this.gasOver(window, 1.15));
+    // A float that is stuck or silent leaves what it told before.
+    if (this.frozen !== null || most === Number.POSITIVE_INFINITY) return CURVE_GAS_ROOM * this.gasByCurve() < limit;
+    return most < limit && this.curveAgrees(limit);
+  }
+
+  /** Half a day gives more than the limit, beyond doubt. */
+  private gasReturns(limit: number): boolean {
+    // What comes back in the last half of a day makes its whole half as steep: where that is far from it, the half is not asked.
+    if (this.gasOver(24, 1.64) < limit / 4) return false;
+    const least = this.gasOver(12, -1.64);
+    return least !== Number.POSITIVE_INFINITY && least > limit;
+  }
+
+  /** Gas by the last hours, L/h, so many standard errors above what they show; Infinity where they show none, or climb. */
+  private gasOver(window: number, errors: number): number {
+    const line = this.line(window);
+    return line === null || line.slope > 1.5 ? Number.POSITIVE_INFINITY : gasLPerH(-line.slope + errors * line.se, this.setup.volumeL);
   }
 
   /** A day's line can fall behind a fermentation that warms itself: the curve must not say much more. */

@@ -21,6 +21,9 @@ const CURVE_SURE = 0.75;
 /** Rise over a week, points a day, under which a float that drifted is at rest again (ours). */
 const STILL_CLIMB = 0.02;
 
+/** Points above its lowest that a float stands at least which has climbed for a week (ours: at the limit it climbs one in it). */
+const CLIMB_POINTS = 0.4;
+
 /** Points below the lowest level of a stall at which one is over: a level at the limit must not flicker (dead band as in ANSI/ISA-18.2; its width is ours). */
 const STUCK_BAND = 1;
 
@@ -120,8 +123,16 @@ export class Watch extends Ending {
 
   /** The gravity climbs, which a ferment does not: what is seen is the float. */
   private climbs(window: 72 | 168): boolean {
+    // What has climbed for a week stands well above the lowest it was seen at: where it does not, the week need not be asked.
+    if (window === 168 && !this.standsAbove(CLIMB_POINTS)) return false;
     const line = this.line(window);
     return line !== null && line.slope - 1.64 * line.se > (window === 72 ? 0.12 : 0.06);
+  }
+
+  /** Its level is so many points above the lowest of its quiet days, or none of them is known. */
+  private standsAbove(points: number): boolean {
+    const level = this.levelNow();
+    return level === null || this.lowest === null || level - this.lowest > points;
   }
 
   /** A float that was seen to climb drifts on until its week has come to rest: at the limit it must not flicker. */
