@@ -5,7 +5,7 @@ import { neckCall } from './calls/neck';
 import { rackCall } from './calls/rack';
 import type { Scene } from './calls/scene';
 import { sensorCall } from './calls/sensor';
-import { onceSettled } from './calls/settling';
+import { onceSettled, rackOnceSettled } from './calls/settling';
 import { stalledCall } from './calls/stalled';
 import { startedCall } from './calls/started';
 import { temperatureCall } from './calls/temperature';
@@ -95,6 +95,7 @@ function judgementOf(watch: Watch, at: Instant, hour: number, picture: boolean):
     sensor: sensorCall(scene),
     ...(hand ? callsByHand(scene, hand) : {}),
   };
+  calls.rack = rackOnceSettled(scene, calls.rack);
   calls.bottle = onceSettled(scene, calls.bottle);
 
   const fit = hand ? hand.fit : watch.fit();
@@ -155,7 +156,7 @@ function terminalOf(watch: Watch, at: Instant, hour: number, level: number | nul
 function stageByHand(calls: Record<CallName, Call>): Stage {
   if (calls.started.verdict !== 'yes') return calls.started.verdict === 'unknown' ? 'unknown' : 'lag';
   if (calls.bottle.verdict === 'yes') return 'terminal';
-  return calls.neck.verdict === 'yes' || calls.rack.verdict === 'yes' || calls.rack.verdict === 'unknown' ? 'slowing' : 'unknown';
+  return calls.neck.verdict === 'yes' || calls.rack.verdict === 'yes' || calls.rack.verdict === 'unknown' || calls.rack.since !== null ? 'slowing' : 'unknown';
 }
 
 /** Before the pitch, or where nobody told when it was, there is nothing to judge but the temperature. */

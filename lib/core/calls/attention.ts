@@ -94,9 +94,13 @@ const rank = (state: StateWord) => STATE_WORDS.indexOf(state);
 /** The call that has most to tell while there is nothing to do. */
 function quietCall({ calls, stage, neck }: AttentionInput): CallName {
   if (stage === 'not_started' || stage === 'lag') return 'started';
-  if (stage === 'unknown') return 'sensor';
+  if (calls.started.verdict === 'yes' && calls.stalled.verdict === 'unknown') return 'stalled';
+  // Where nobody reads it with a float, that there is none is no news.
+  if (stage === 'unknown' && calls.started.verdict !== 'yes') return 'started';
   if (neck === 'blow_off' && stage !== 'terminal') return 'neck';
-  return calls.rack.verdict === 'yes' ? 'bottle' : 'rack';
+  if (stage === 'unknown') return 'stalled';
+  const racked = calls.rack.verdict === 'no' && calls.rack.since !== null;
+  return racked || calls.rack.verdict === 'yes' ? 'bottle' : 'rack';
 }
 
 function nextTime(calls: AttentionInput['calls']): Instant | null {

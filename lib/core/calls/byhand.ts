@@ -1,9 +1,10 @@
 import type { Call, CallName } from '../types';
 import { gasLPerH, VOLUMES_PER_POINT } from '../gas/gas';
-import { handRecord, type HandRecord } from '../stages/byhand';
+import { HAND_MOST, handRecord, type HandRecord } from '../stages/byhand';
 import { OVERDUE_H } from '../stages/watch';
 import { foamSeen, standsHigh } from './foam';
 import { leaveOn } from './neck';
+import { racked } from './rack';
 import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, gasWords, gravityWords, pointsWords, rateWords, spanWords } from './words';
 
@@ -19,6 +20,9 @@ export function callsByHand(scene: Scene, record: HandRecord): Pick<Record<CallN
     bottle: bottle(scene, record),
   };
 }
+
+/** A reading older than this is repeated before anything goes in on its word, h. */
+const FRESH_H = 24;
 
 const readWords = (scene: Scene, record: HandRecord): string => `${gravityWords(record.last.points)} read ${when(scene, scene.watch.track.instantOf(record.last.hour))}`;
 
@@ -40,7 +44,7 @@ function started(scene: Scene, record: HandRecord): Call {
       kind: 'overdue',
       since: sinceOf(scene, limit),
       evidence: figures,
-      act: 'Check the temperature, then pitch again if it is right.',
+      act: scene.hour - record.last.hour > FRESH_H ? 'Read it again first. Where it has not fallen and is warm enough, pitch again.' : 'Check the temperature, then pitch again if it is right.',
       changesIt: 'Changes it: a reading 3 points lower.',
     });
   }
@@ -51,6 +55,9 @@ function started(scene: Scene, record: HandRecord): Call {
   });
 }
 
+/** Share of the fall after which the strong foam is over (ours). */
+const PAST_FOAM = 0.4;
+
 function neck(scene: Scene, record: HandRecord): Call {
   const { watch } = scene;
   const limit = watch.swapGas();
@@ -58,7 +65,9 @@ function neck(scene: Scene, record: HandRecord): Call {
   if (record.started !== 'yes') return call(record.started === 'unknown' ? 'unknown' : 'no', 'Leave the tube on.', 'Not seen working yet; the strong gas is still to come.');
   const { rate } = record;
   const gas = rate ? gasLPerH(rate.value + 1.28 * rate.sd, watch.setup.volumeL) : null;
-  const past = rate !== null && record.readings.length >= 3 && watch.segment.effectiveOg - record.last.points > 0.4 * (watch.segment.effectiveOg - watch.fgPrior().mean);
+  const og = watch.segment.effectiveOg;
+  const calm = og - PAST_FOAM * (og - watch.fgPrior().mean);
+  const past = rate !== null && record.readings.length >= 3 && record.last.points < calm;
   if (gas !== null && past && gas < limit) {
     const foam = foamSeen(watch.setup.events, scene.at);
     if (standsHigh(foam)) return leaveOn(scene, foam, `Gas at most ${gasWords(gas)} by the last two readings.`, [evidence('gas at most', gas, limit, 'L/h')]);
@@ -67,6 +76,14 @@ function neck(scene: Scene, record: HandRecord): Call {
       evidence: [evidence('gas at most', gas, limit, 'L/h')],
       act: 'Look at the foam, then swap.',
       changesIt: `Changes it: gas over ${gasWords(1.3 * limit)}.`,
+    });
+  }
+  if (gas !== null && gas < limit) {
+    const few = record.last.points < calm;
+    return call('hold', 'Leave the tube on.', few ? `Gas at most ${gasWords(gas)}, but by two readings alone.` : `${pointsWords(og - record.last.points)} down; the strong foam may still come.`, {
+      evidence: [evidence('gas at most', gas, limit, 'L/h')],
+      act: 'Read again in a day or two.',
+      changesIt: few ? 'Changes it: a third reading.' : `Changes it: ${gravityWords(calm)} or less, at a gas under ${gasWords(limit)}.`,
     });
   }
   return call(gas === null ? 'unknown' : 'hold', 'Leave the tube on.', gas === null ? 'One reading does not tell the pace.' : `Gas may still be ${gasWords(gas)}; an airlock is safe under ${gasWords(limit)}.`, {
@@ -109,6 +126,10 @@ function rack(scene: Scene, record: HandRecord): Call {
   const top = watch.zoneTop();
   const figures = [evidence('gravity', 1 + record.last.points / 1000, 1 + top / 1000, 'SG'), ...(record.rate ? [evidence('fall', record.rate.value, 1.2, 'points/d')] : [])];
   if (record.started !== 'yes') return call(record.started === 'unknown' ? 'unknown' : 'no', 'Not yet: not seen working.', 'Racking comes at the end of the fall.');
+  // Came off the lees since it was all but there.
+  const near = record.readings.find((one) => one.points <= top);
+  const off = near ? racked(scene, watch.track.instantOf(near.hour)) : null;
+  if (off) return { ...off, evidence: figures };
   if (!record.inside) return call('no', 'Leave it on the lees.', `${readWords(scene, record)}; the expected end is ${gravityWords(top)} or less.`, { evidence: figures, changesIt: `Changes it: ${gravityWords(top)} or less.` });
   if (record.rate && record.rate.value < 1.2 && record.rate.value + 0.8 * record.rate.sd < 2) {
     return call('yes', 'May be racked.', `${readWords(scene, record)}, ${rateWords(record.rate.value)} since the one before.`, { since: sinceOf(scene, record.last.hour), evidence: figures, act: 'Rack off the lees when it suits.' });
@@ -119,12 +140,12 @@ function rack(scene: Scene, record: HandRecord): Call {
 function bottle(scene: Scene, record: HandRecord): Call {
   const { watch } = scene;
   const top = watch.zoneTop();
-  const figures = [evidence('gravity', 1 + record.last.points / 1000, 1 + top / 1000, 'SG'), ...(record.most === null ? [] : [evidence('may still fall', record.most.points, 1.2, 'points')])];
+  const figures = [evidence('gravity', 1 + record.last.points / 1000, 1 + top / 1000, 'SG'), ...(record.most === null ? [] : [evidence('may still fall', record.most.points, HAND_MOST, 'points')])];
   if (record.started !== 'yes') return call(record.started === 'unknown' ? 'unknown' : 'no', 'Not yet: not seen working.', 'All its sugar may be still to come.', { evidence: figures });
   if (!record.inside) {
-    return call(record.stuck ? 'hold' : 'no', record.stuck ? 'Do not bottle: sugar is left.' : 'Not yet: it still has sugar.', `${readWords(scene, record)}; the expected end is ${gravityWords(top)} or less.`, { evidence: figures, changesIt: `Changes it: ${gravityWords(top)} or less, and equal ${spanWords(record.settlesAfterH ?? 72)} on.` });
+    return call(record.stuck ? 'hold' : 'no', record.stuck ? 'Do not bottle: sugar is left.' : 'Not yet: it still has sugar.', `${readWords(scene, record)}; the expected end is ${gravityWords(top)} or less.`, { evidence: figures, changesIt: `Changes it: ${gravityWords(top)} or less, and equal ${spanWords(record.settlesAfterH)} on.` });
   }
-  if (record.most !== null && record.most.points < 1.2) {
+  if (record.most !== null && record.most.points < HAND_MOST) {
     return call('yes', 'May be bottled.', `Equal over ${spanWords(record.most.hours)}; at worst ${(record.most.points * VOLUMES_PER_POINT).toFixed(1)} volumes more in the bottle.`, {
       since: sinceOf(scene, record.last.hour),
       evidence: figures,
@@ -132,11 +153,11 @@ function bottle(scene: Scene, record: HandRecord): Call {
       changesIt: 'Changes it: a reading 1 point lower.',
     });
   }
-  const again = later(scene, Math.max(0, record.last.hour + (record.settlesAfterH ?? 72) - scene.hour));
+  const again = later(scene, Math.max(0, record.settlesAtHour - scene.hour));
   return call('unknown', 'Not known whether it has stopped.', `${readWords(scene, record)}; one more reading tells.`, {
     expectedAt: again,
     evidence: figures,
     act: `Read again ${when(scene, again)} or after.`,
-    changesIt: `Changes it: an equal reading then, within 1 point.`,
+    changesIt: 'Changes it: an equal reading then.',
   });
 }

@@ -1,4 +1,4 @@
-import type { Call } from '../types';
+import type { Call, Instant } from '../types';
 import { RACK_PACE } from '../stages/ending';
 import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, fallingWords, gravityWords, pointsWords, rateWords } from './words';
@@ -17,10 +17,8 @@ export function rackCall(scene: Scene): Call {
   if (watch.rack.on) {
     const since = sinceOf(scene, watch.rack.since);
     const words = level === null ? '' : `${gravityWords(level)}, ${rate ? rateWords(rate.value) : 'hardly falling'}.`;
-    const racked = scene.watch.setup.events.findLast((event) => event.kind === 'rack' && event.at <= scene.at)?.at ?? null;
-    if (racked !== null && since !== null && racked >= since - RACKED_LATELY_MS) {
-      return call('no', `Racked ${when(scene, racked)}.`, `${words} It clears on its own now.`.trimStart(), { since: racked, evidence: figures });
-    }
+    const off = since === null ? null : racked(scene, since, words);
+    if (off) return { ...off, evidence: figures };
     const headline = `May be racked: since ${since === null ? 'now' : when(scene, since)}.`;
     if (blind) {
       return call('yes', headline, `By what the sensor gave before it ${watch.frozen ? 'stuck' : 'fell silent'}.`, {
@@ -50,6 +48,13 @@ export function rackCall(scene: Scene): Call {
     evidence: figures,
     changesIt,
   });
+}
+
+/** That it came off the lees, at the earliest shortly before it was ready; null where it did not. */
+export function racked(scene: Scene, ready: Instant, words = ''): Call | null {
+  const at = scene.watch.setup.events.findLast((event) => event.kind === 'rack' && event.at <= scene.at)?.at ?? null;
+  if (at === null || at < ready - RACKED_LATELY_MS) return null;
+  return call('no', `Racked ${when(scene, at)}.`, `${words} It clears on its own now.`.trimStart(), { since: at });
 }
 
 /** Hours until the curve has 2 points left, and the looks it takes to be sure; null without a curve. */

@@ -13,6 +13,13 @@ export function settlesAt({ watch, at }: Pick<Scene, 'watch' | 'at'>): Instant |
   return last;
 }
 
+/** What may come off its lees by its gravity stands still while a fining falls in it. */
+export function rackOnceSettled(scene: Scene, rack: Call): Call {
+  const clear = rack.verdict === 'yes' ? settlesAt(scene) : null;
+  if (clear === null) return rack;
+  return call('soon', `Racking: wait until it has settled, ${when(scene, clear)}.`, 'A fining still falls in it.', { expectedAt: clear, evidence: rack.evidence, act: 'Let it stand still.', changesIt: `Changes it: ${when(scene, clear)}.` });
+}
+
 /** A drink that may be bottled by its gravity waits until its fining has sunk: what still floats goes into the bottle. */
 export function onceSettled(scene: Scene, bottle: Call): Call {
   const clear = bottle.verdict === 'yes' ? settlesAt(scene) : null;

@@ -13,6 +13,10 @@ export interface HandReading {
 
 /** A float that speaks less often than this is read like a hydrometer, h. */
 const SELDOM_H = 2.5;
+/** Most points that may still come where it may be bottled. */
+export const HAND_MOST = 1.2;
+/** Shortest span of readings that tells of an end, h. */
+const APART_H = 72;
 /** Pace times age of the end of a ferment that is still acceptable, at the slow side (own simulations: one in ten below). */
 const SLOW_PACE = 4;
 
@@ -26,8 +30,10 @@ export interface HandRecord {
   started: 'yes' | 'no' | 'overdue' | 'unknown';
   /** Most that may still come (9 in 10), points, and the span of the readings that say so; null with one reading. */
   most: { points: number; hours: number } | null;
-  /** Hours after the last reading at which an equal one would settle whether it is done. */
-  settlesAfterH: number | null;
+  /** Hours that equal readings must lie apart to settle whether it is done, counted from the last one. */
+  settlesAfterH: number;
+  /** h since the pitch from which on a reading equal to the last would settle it, by any of the readings so far. */
+  settlesAtHour: number;
   inside: boolean;
   stuck: boolean;
 }
@@ -88,13 +94,12 @@ function describe(watch: Watch, hour: number, readings: HandReading[], last: Han
   let most: HandRecord['most'] = null;
   for (const earlier of readings) {
     const hours = last.hour - earlier.hour;
-    if (hours < 72) continue;
-    const pace = (Math.max(0, earlier.points - last.points) + 1.28 * Math.hypot(earlier.sd, last.sd)) / (hours / 24);
+    if (hours < APART_H) continue;
+    const pace = fallBetween(earlier, last.points, last.sd) / (hours / 24);
     const points = (pace * ageDays) / SLOW_PACE / 1.5;
     if (most === null || points < most.points) most = { points, hours };
   }
-  const equalSd = 1.28 * Math.hypot(last.sd, HAND_SD);
-  const settlesAfterH = Math.max(72, (24 * equalSd * ageDays) / SLOW_PACE / 1.5 / 1.2);
+  const apart = (from: HandReading) => settlesAfter(from, last.points);
   const flat = rate !== null && rate.hours >= 60 && rate.value < 0.5 && rate.value + 1.28 * rate.sd < 0.75;
   return {
     readings,
@@ -103,10 +108,21 @@ function describe(watch: Watch, hour: number, readings: HandReading[], last: Han
     fit: fitHand(watch, readings),
     started,
     most,
-    settlesAfterH,
+    settlesAfterH: apart(last),
+    settlesAtHour: Math.min(...readings.map((one) => one.hour + apart(one))),
     inside: last.points <= top,
     stuck: started === 'yes' && flat && last.points > watch.stuckFloor() && hour - last.hour < 240,
   };
+}
+
+/** Most that it may have fallen from one reading to another, points. */
+const fallBetween = (from: HandReading, points: number, sd: number): number => Math.max(0, from.points - points) + 1.28 * Math.hypot(from.sd, sd);
+
+/** Hours after `from` at which a reading of so many points would leave less than {@link HAND_MOST} to come; the batch ages meanwhile. */
+function settlesAfter(from: HandReading, points: number): number {
+  const fall = fallBetween(from, points, HAND_SD);
+  const room = Math.max(0.5, HAND_MOST * SLOW_PACE * 1.5 - fall);
+  return Math.max(APART_H, (fall * Math.max(0, from.hour)) / room + 1);
 }
 
 function fitHand(watch: Watch, readings: readonly HandReading[]): CurveFit | null {

@@ -68,6 +68,18 @@ describe('a lane', () => {
     expect(attentionOf(batch({}, { stage: 'lag' })).call).toBe('started');
   });
 
+  it('read by hand alone says how it goes, not that it has no sensor', () => {
+    const byHand = { sensor: { verdict: 'unknown' as const } };
+    expect(attentionOf(batch({ ...byHand, started: { verdict: 'unknown' } }, { stage: 'unknown' })).call).toBe('started');
+    expect(attentionOf(batch({ ...byHand, started: { verdict: 'yes' } }, { stage: 'unknown' })).call).toBe('stalled');
+    expect(attentionOf(batch({ ...byHand, started: { verdict: 'yes' }, stalled: { verdict: 'unknown' } })).call).toBe('stalled');
+    expect(attentionOf(batch({ ...byHand, started: { verdict: 'yes' } }, { stage: 'unknown', neck: 'blow_off' })).call).toBe('neck');
+  });
+
+  it('that was racked says when it may be bottled', () => {
+    expect(attentionOf(batch({ rack: { verdict: 'no', since: NOW - HOUR } }, { stage: 'terminal' })).call).toBe('bottle');
+  });
+
   it('that foams into its tube says that the tube stays', () => {
     expect(attentionOf(batch({ neck: { verdict: 'hold' } }, { stage: 'peak', neck: 'blow_off' }))).toEqual({ state: 'Leave be', group: 'leave', call: 'neck', at: null });
   });

@@ -343,6 +343,44 @@ describe('hydrometer readings alone', () => {
     expect(bottle.act).toMatch(/^Read again /);
     expect(bottle.expectedAt).toBeGreaterThan(PITCH + 23 * DAY);
   });
+
+  it('are settled by an equal reading at the time that is named, and not by looking more often', () => {
+    const twoAWeek = [...events.slice(0, 3), ...[21, 24, 27].map((day) => read(day, 1.0))];
+    const asked = at(22, [], { events: twoAWeek.slice(0, 4) }).calls.bottle.expectedAt!;
+    const { bottle } = at(27.5, [], { events: twoAWeek }).calls;
+    expect(bottle.verdict).toBe('yes');
+    expect(asked).toBeLessThanOrEqual(PITCH + 27 * DAY);
+    for (const day of [34, 48]) {
+      const old = [...events.slice(0, 3), read(day, 1.0)];
+      const named = at(day + 0.1, [], { events: old }).calls.bottle;
+      expect(named.verdict).toBe('unknown');
+      const again = { ...read(0, 1.0), at: named.expectedAt! };
+      const between = { ...read(0, 1.0), at: (again.at + PITCH + day * DAY) / 2 };
+      const looked = (more: BatchEvent[]) => assess({ ...setup, events: [...old, ...more] }, [], again.at + 3_600_000).assessment.calls.bottle.verdict;
+      expect([looked([again]), looked([between, again])]).toEqual(['yes', 'yes']);
+    }
+  });
+
+  it('are not asked to rack again what was racked, nor while a fining falls in it', () => {
+    const off: BatchEvent = { at: PITCH + 22 * DAY, kind: 'rack' };
+    const fining: BatchEvent = { at: PITCH + 22.1 * DAY, kind: 'note', settlesAt: PITCH + 40 * DAY };
+    expect(at(29, [], { events: [...events, off] }).calls.rack).toMatchObject({ verdict: 'no', since: off.at });
+    expect(at(29, [], { events: [...events, fining] }).calls.rack).toMatchObject({ verdict: 'soon', expectedAt: fining.settlesAt });
+    expect(at(29, [], { events: [...events, { ...off, at: PITCH + 2 * DAY }] }).calls.rack.verdict).toBe('yes');
+  });
+
+  it('keep the tube on before the strong foam is past for that reason, not for a gas that an airlock bears', () => {
+    const slow = [read(4, 1.05), read(10, 1.044), read(17, 1.038)];
+    const { neck } = at(18, [], { events: slow }).calls;
+    expect(neck).toMatchObject({ verdict: 'hold', reason: expect.stringMatching(/17 points down; the strong foam/) });
+    expect(neck.reason).not.toMatch(/L\/h/);
+  });
+
+  it('are repeated before yeast goes in on the word of an old one', () => {
+    const flat = [read(3.1, 1.054)];
+    expect(at(3.5, [], { events: flat }).calls.started.act).toMatch(/^Check the temperature/);
+    expect(at(9, [], { events: flat }).calls.started.act).toMatch(/^Read it again first/);
+  });
 });
 
 describe('calls that do not flicker', () => {
