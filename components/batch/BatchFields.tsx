@@ -98,7 +98,7 @@ export function BatchFields({ draft, errors, onChange, latest, fresh, promise, c
         <Field className="col-span-2" label="Pitched, local time" type="datetime-local" max={latest} hint="Empty: not pitched yet. Log the pitch when it is done." {...text('pitchedAt')} />
         <UnitField measure="gravity" className="col-span-2" label={<Sentence>Original gravity, at 20 °C</Sentence>} placeholder="1.048" hint="Empty: not measured. Strength and attenuation are then not known." {...text('gravity')} />
       </Group>
-      <Group title="The yeast" note={fresh ? `Filled in with what is usual for ${KIND_WORDS[draft.kind]} (common practice). The packet of your yeast goes before it.` : undefined}>
+      <Group title="The yeast" note={fresh ? `Filled in ${promise ? 'from the must sheet' : `with what is usual for ${KIND_WORDS[draft.kind]} (common practice)`}. The packet of your yeast goes before it.` : undefined}>
         <Field className="col-span-2" label="Yeast" maxLength={80} {...text('yeast')} />
         <Field label="Attenuation, from" unit="%" {...figure('attenuationMin')} />
         <Field label="to" unit="%" {...figure('attenuationMax')} />

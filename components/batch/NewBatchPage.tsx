@@ -89,7 +89,7 @@ function NewBatchForm({ timeZone, now, proposal, gravity }: { timeZone: string; 
         <form onSubmit={(event) => void send(event)} noValidate className="flex max-w-[860px] flex-col gap-5 px-(--margin) py-4">
           {proposal && (
             <p className="type-body border-l-[3px] border-rule2 pl-3">
-              <Sentence>{`Promised ${proposal.expected_original_gravity.value.lo.toFixed(3)} to ${proposal.expected_original_gravity.value.hi.toFixed(3)}. Write the gravity as you read it.`}</Sentence>
+              <Sentence>{`Promised ${proposal.expected_original_gravity.value.lo.toFixed(3)} to ${proposal.expected_original_gravity.value.hi.toFixed(3)}. ${gravity === '' ? 'Write the gravity as measured, corrected to 20 °C.' : 'The gravity below is the one you measured, corrected to 20 °C.'}`}</Sentence>
             </p>
           )}
           <BatchFields draft={draft} errors={errors} onChange={setDraft} latest={toLocal(now, timeZone)} fresh promise={proposal ? { volumeL: proposal.volume_l, vesselL: proposal.vessel_l, neck: proposal.neck, fits: proposal.fits, sentence: proposal.neck_reason } : undefined}>

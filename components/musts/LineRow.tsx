@@ -141,7 +141,7 @@ export function LineRow({ line, error, first, last, onChange, onMove, onRemove }
           <Field label={`Cost of one ${unitWord(line.unit, ingredient)}`} unit={currency} inputMode="decimal" autoComplete="off" value={line.cost} onChange={(event) => onChange({ ...line, cost: event.target.value })} />
           <Field className="col-span-full" label="Note" autoComplete="off" maxLength={300} value={line.note} onChange={(event) => onChange({ ...line, note: event.target.value })} />
           <p className="type-tick col-span-full text-ink2">
-            {ingredient.status}: {ingredient.source}
+            {ingredient.source.toLowerCase().startsWith(ingredient.status) ? ingredient.source : `${ingredient.status}: ${ingredient.source}`}
             {ingredient.allergens.length > 0 && `. Holds ${ingredient.allergens.join(', ')}.`}
           </p>
           <div className="col-span-full flex flex-wrap gap-2">

@@ -13,7 +13,7 @@ import { State } from '@/components/ui/StateMark';
 import { camelKeys } from '@/lib/contracts/case';
 import type { MustBody } from '@/lib/contracts/musts';
 import { gapOf, measuredOriginal, type Measurement } from '@/lib/core/must/original-gravity';
-import { pitchChecklist } from '@/lib/core/must/pitch';
+import { pitchChecklist, sulphited } from '@/lib/core/must/pitch';
 import type { Range } from '@/lib/core/units/range';
 import { useKept } from './use-kept';
 import { ends } from './words';
@@ -79,7 +79,9 @@ export function Measured({ must, keptAs, mayStart }: { must: MustBody; keptAs: s
   const expected = must.result.ok ? must.result.outcome.gravity_at_pitch.value : null;
   const temperature = typedNumber(mustC);
   const grams = typedNumber(dry);
-  const check = pitchChecklist({ yeast: must.sheet.yeast && camelKeys(must.sheet.yeast), dryYeastG: isNumber(grams) && grams > 0 ? grams : null, mustC: isNumber(temperature) ? temperature : null, glass: true, sulphitedHoursAgo: null });
+  const check = pitchChecklist({ yeast: must.sheet.yeast && camelKeys(must.sheet.yeast), dryYeastG: isNumber(grams) && grams > 0 ? grams : null, mustC: isNumber(temperature) ? temperature : null, glass: true, sulphited: sulphited(must.sheet.lines) });
+
+  const waits = check.steps.some((step) => step.key === 'sulphite' && !ticked.has(step.key));
 
   return (
     <div className="flex flex-col gap-6">
@@ -129,7 +131,7 @@ export function Measured({ must, keptAs, mayStart }: { must: MustBody; keptAs: s
         <ol className="flex flex-col">
           {check.steps.map((step) => (
             <li key={step.key} className="border-b border-rule py-2">
-              <Box ticked={ticked.has(step.key)} notYet={step.key === 'pitch' && check.stops.length > 0} onTick={(on) => setTyped({ ...typed, ticked: on ? [...typed.ticked, step.key] : typed.ticked.filter((key) => key !== step.key) })}>
+              <Box ticked={ticked.has(step.key)} notYet={step.key === 'pitch' && (check.stops.length > 0 || waits)} onTick={(on) => setTyped({ ...typed, ticked: on ? [...typed.ticked, step.key] : typed.ticked.filter((key) => key !== step.key) })}>
                 <span className="type-body">
                   <Sentence>{step.sentence}</Sentence>
                   {step.caution && <span className="type-reason block text-ink2"><Sentence>{step.caution}</Sentence></span>}

@@ -1,7 +1,7 @@
 import { dayName } from '@/components/charts/zone';
 import { camelKeys } from '@/lib/contracts/case';
 import type { MustBody } from '@/lib/contracts/musts';
-import { pitchChecklist } from '@/lib/core/must/pitch';
+import { pitchChecklist, sulphited } from '@/lib/core/must/pitch';
 import { Sentence } from '@/components/ui/Sentence';
 import { gravityEnds, gravityName, gravityText, temperatureName, temperatureNumber, temperatureText, volumeText } from '@/components/ui/units';
 import { amountText } from './amount';
@@ -54,7 +54,7 @@ function Lines({ lines }: { lines: MustBody['sheet']['lines'] }) {
 export function WorkSheet({ must, timeZone }: { must: MustBody; timeZone: string }) {
   const { sheet, result } = must;
   const outcome = result.ok ? result.outcome : null;
-  const check = pitchChecklist({ yeast: sheet.yeast && camelKeys(sheet.yeast), dryYeastG: null, mustC: null, glass: true, sulphitedHoursAgo: null });
+  const check = pitchChecklist({ yeast: sheet.yeast && camelKeys(sheet.yeast), dryYeastG: null, mustC: null, glass: true, sulphited: sulphited(sheet.lines) });
   const at = must.versions.find((item) => item.version === must.version)?.at ?? must.created_at;
   const dense = sheet.lines.length > ONE_COLUMN;
   const weight = (kind: string) => (GRAVE.includes(kind) ? GRAVE.indexOf(kind) : GRAVE.length);

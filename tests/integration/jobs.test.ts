@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { Alert, Batch, Entry, FiningRun, Job, Membership } from '@/db/models';
+import { Alert, Batch, Entry, FiningRun, Job, Membership, OutboxMail } from '@/db/models';
 import { inTransaction } from '@/db/client';
 import { batchState } from '@/db/queries/batch-states';
 import type { AssessmentBody } from '@/lib/contracts/assessment';
@@ -56,6 +56,19 @@ describe('the program’s jobs', () => {
     await sync(batch, judged(RACK), NOON + 5 * HOUR);
     expect(await titles(hand)).toEqual(['Rack Perry']);
     await sync(batch, null, NOON + 6 * HOUR);
+    expect(await titles(hand)).toEqual([]);
+  });
+
+  it('leave at once when a reading was logged that refutes their call', async () => {
+    const hand = await buildMember('hand');
+    const batch = await buildBatch({ cellarId: hand.cellarId, name: 'Perry', pitchedAt: new Date(NOON - 5 * DAY), neck: 'blow_off' });
+    await sync(batch, judged({ started: { verdict: 'hold', kind: 'overdue', since: NOON - HOUR } }));
+    expect(await titles(hand)).toEqual(['Look at Perry: it should work by now']);
+    await Entry.create({ cellarId: hand.cellarId, batchId: batch.id, kind: 'note', at: new Date(NOON), text: 'Cold in here.', createdAt: new Date(NOON + MINUTE) });
+    await sync(batch, judged({}), NOON + 2 * MINUTE);
+    expect(await titles(hand)).toHaveLength(1);
+    await Entry.create({ cellarId: hand.cellarId, batchId: batch.id, kind: 'reading', at: new Date(NOON - HOUR), gravity: 1.03, createdAt: new Date(NOON + 3 * MINUTE) });
+    await sync(batch, judged({}), NOON + 4 * MINUTE);
     expect(await titles(hand)).toEqual([]);
   });
 
@@ -225,6 +238,19 @@ describe('finings in two doses', () => {
     expect(await doses()).toBe(2);
     expect(await Job.count({ where: { finingId: run.id, kind: 'settle' } })).toBe(1);
     expect((await FiningRun.findByPk(run.id))?.secondAt).not.toBeNull();
+  });
+
+  it('take their clock off the rounds when the batch is over, and do not ring', async () => {
+    const brewer = await buildMember('brewer');
+    const batch = await ciderAt(brewer);
+    await startFining(brewer, batch.id, finingForm.parse({ at: isoAt(NOON), fining: 'two-part' }), clockAt());
+    expect(await OutboxMail.count({ where: { cellarId: brewer.cellarId } })).toBe(1);
+    await sync(batch, judged({}), NOON + MINUTE);
+    const clocks = async () => (await listJobs(brewer, open, clockAt())).items.filter((job) => job.kind === 'fining_b').length;
+    expect(await clocks()).toBe(1);
+    await sync(batch, null, NOON + 2 * MINUTE);
+    expect(await clocks()).toBe(0);
+    expect(await OutboxMail.count({ where: { cellarId: brewer.cellarId } })).toBe(0);
   });
 
   it('of one dose begin their wait at once', async () => {

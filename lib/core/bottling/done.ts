@@ -75,6 +75,24 @@ export function agreementHours(pitchedAt: Instant | null, at: Instant): number {
   return Math.min(168, Math.max(72, 0.2 * ageH));
 }
 
+/** The same asked the other way: how long after its first reading an agreement has lasted enough, hours; the batch ages meanwhile. */
+function agreedAfter(pitchedAt: Instant | null, first: Instant): number {
+  const ageH = pitchedAt === null ? Infinity : Math.max(0, first - pitchedAt) / HOUR;
+  return Math.min(168, Math.max(72, (0.2 / 0.8) * ageH));
+}
+
+/** The last readings, as far back as all of them lie within a point. */
+function agreeing(readings: readonly HydrometerReading[]): readonly HydrometerReading[] {
+  let from = readings.length - 1;
+  while (from > 0 && spreadOf(readings.slice(from - 1)) <= AGREE_POINTS + 1e-6) from -= 1;
+  return readings.slice(from);
+}
+
+function spreadOf(readings: readonly HydrometerReading[]): number {
+  const points = readings.map((reading) => pointsOf(reading.gravity));
+  return Math.max(...points) - Math.min(...points);
+}
+
 /** Judges whether a batch has finished, from what was read and told. Pure; `at` is now. */
 export function checkDone(input: DoneInput): DoneCheck {
   const readings = input.hydrometer
@@ -149,15 +167,17 @@ function settle(input: DoneInput, readings: readonly HydrometerReading[], last: 
   const window = readings.filter((r) => r.at >= last.at - needH * HOUR);
   const before = readings.filter((r) => r.at <= last.at - needH * HOUR).at(-1);
   const compared = before ? [before, ...window] : window;
-  const gravities = compared.map((r) => pointsOf(r.gravity));
-  const spread = Math.max(...gravities) - Math.min(...gravities);
-  if (compared.length > 1 && spread > AGREE_POINTS + 1e-6) {
-    return say('not_yet', `The readings differ by ${spread.toFixed(1)} points over ${days((last.at - (compared[0]?.at ?? last.at)) / HOUR)}.`, `Equal readings ${days(needH)} apart.`, last.at + needH * HOUR);
-  }
-  if (!before) {
-    const first = compared[0] ?? last;
-    const reason = compared.length > 1 ? `Readings agree, but over ${days((last.at - first.at) / HOUR)} only; ${days(needH)} are asked.` : 'One hydrometer reading only.';
-    return say('unknown', reason, `An equal reading ${days(needH)} after the first.`, first.at + needH * HOUR);
+  const spread = spreadOf(compared);
+  const differ = spread > AGREE_POINTS + 1e-6;
+  if (differ || !before) {
+    const agreed = agreeing(readings);
+    const first = agreed[0] ?? last;
+    const askedH = agreedAfter(input.pitchedAt, first.at);
+    const again = Math.ceil(first.at + askedH * HOUR);
+    const short = `${agreed.length === readings.length ? 'Readings' : `The last ${agreed.length} readings`} agree, but over ${days((last.at - first.at) / HOUR)} only; ${days(askedH)} are asked.`;
+    if (!differ) return say('unknown', agreed.length > 1 ? short : 'One hydrometer reading only.', `An equal reading ${days(askedH)} after the first.`, again);
+    if (agreed.length > 1) return say('not_yet', short, `An equal reading ${days(askedH)} after the first of them.`, again);
+    return say('not_yet', `The readings differ by ${spread.toFixed(1)} points over ${days((last.at - (compared[0]?.at ?? last.at)) / HOUR)}.`, `Equal readings ${days(askedH)} apart.`, again);
   }
   return { verdict: 'done', reasons: [`${compared.length} readings agree within a point over ${days((last.at - before.at) / HOUR)}.`], changesIt: 'A fall of more than 1 point.', readAgainAt: null };
 }

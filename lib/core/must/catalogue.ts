@@ -3,6 +3,9 @@ import { practice, SOURCES } from '../how/sources';
 import { between, exactly, type Range } from '../units/range';
 import type { Ingredient, IngredientKind, Yeast } from './ingredients';
 
+/** As on the packets: common practice. That it needs a day is among the sheet's notes. */
+const SULPHITE_HURTS = 'Its powder and gas hurt eyes and lungs, worst with asthma: air the room, never smell at it.';
+
 const NONE = exactly(0);
 const ALL = exactly(1);
 
@@ -115,9 +118,9 @@ export const CATALOGUE: readonly Ingredient[] = [
   ingredient('dap', 'diammonium phosphate (DAP)', 'nutrient', { densityGPerMl: spoon(0.95), yanMgPerG: exactly(212.1), usualGPerL: { lo: 0, value: 0.2, hi: 0.3 }, ...SOURCES.dapOiv, caution: 'Not with dry yeast in its water. Not after half the sugar is gone.' }),
   ingredient('complex-nutrient', 'complex yeast nutrient', 'nutrient', { densityGPerMl: spoon(0.7), yanMgPerG: between(80, 130), usualGPerL: between(0.2, 0.6) }),
   ingredient('yeast-autolysate', 'yeast autolysate', 'nutrient', { densityGPerMl: spoon(0.55), yanMgPerG: between(35, 60), usualGPerL: between(0.2, 0.5) }),
-  ingredient('potassium-metabisulphite', 'potassium metabisulphite', 'preservative', { densityGPerMl: spoon(1.2), sulphiteMgPerG: between(500, 576.3), allergens: ['sulphites'], preservative: 'sulphite', usualGPerL: { lo: 0.03, value: 0.08, hi: 0.13 }, caution: 'Wait a day before the yeast.' }),
-  ingredient('sodium-metabisulphite', 'sodium metabisulphite', 'preservative', { densityGPerMl: spoon(1.2), sulphiteMgPerG: between(585, 674), allergens: ['sulphites'], preservative: 'sulphite', usualGPerL: { lo: 0.03, value: 0.07, hi: 0.11 }, caution: 'Wait a day before the yeast. Brings sodium: many countries do not allow it in wine.' }),
-  ingredient('sulphite-tablet', 'sulphite tablet', 'preservative', { each: { name: 'tablet', grams: between(0.42, 0.55) }, sulphiteMgPerG: between(500, 576.3), allergens: ['sulphites'], preservative: 'sulphite', caution: 'Crush it. Wait a day before the yeast.' }),
+  ingredient('potassium-metabisulphite', 'potassium metabisulphite', 'preservative', { densityGPerMl: spoon(1.2), sulphiteMgPerG: between(500, 576.3), allergens: ['sulphites'], preservative: 'sulphite', usualGPerL: { lo: 0.03, value: 0.08, hi: 0.13 }, caution: SULPHITE_HURTS }),
+  ingredient('sodium-metabisulphite', 'sodium metabisulphite', 'preservative', { densityGPerMl: spoon(1.2), sulphiteMgPerG: between(585, 674), allergens: ['sulphites'], preservative: 'sulphite', usualGPerL: { lo: 0.03, value: 0.07, hi: 0.11 }, caution: `${SULPHITE_HURTS} It brings sodium: many countries do not allow it in wine.` }),
+  ingredient('sulphite-tablet', 'sulphite tablet', 'preservative', { each: { name: 'tablet', grams: between(0.42, 0.55) }, sulphiteMgPerG: between(500, 576.3), allergens: ['sulphites'], preservative: 'sulphite', caution: `Crush it. ${SULPHITE_HURTS}` }),
   ingredient('potassium-sorbate', 'potassium sorbate', 'preservative', { densityGPerMl: spoon(0.45), preservative: 'sorbate', usualGPerL: between(0.13, 0.26), caution: 'Keeps yeast from growing: only for a finished drink.' }),
   ingredient('lactose', 'lactose', 'sweetener', { extractShare: exactly(0.95), fermentableShare: NONE, densityGPerMl: between(0.6, 0.75), allergens: ['milk'] }),
   ingredient('erythritol', 'erythritol', 'sweetener', { extractShare: exactly(1), fermentableShare: NONE, densityGPerMl: between(0.8, 0.95) }),

@@ -34,7 +34,7 @@ export function notesOf(sheet: MustSheet, outcome: Omit<MustOutcome, 'notes'>): 
     if (gPerL > usual.hi * 1.0001) say('dose', id, `${ingredient.name}: ${gPerL.toFixed(2)} g/L is over the usual ${usual.lo} to ${usual.hi}.`);
   }
   const sulphite = outcome.sulphiteMgPerL.value;
-  if (sulphite.hi > SULPHITE_TOLD_MG_L) say('sulphite', null, `Up to ${Math.ceil(sulphite.hi)} mg/L of sulphite: the label has to say so over ${SULPHITE_TOLD_MG_L}.`);
+  if (sulphite.hi > SULPHITE_TOLD_MG_L) say('sulphite', null, `Up to ${Math.ceil(sulphite.hi)} mg/L of sulphite: the label has to say so over ${SULPHITE_TOLD_MG_L} mg/L.`);
   if (sulphite.value > SULPHITE_HOLDS_MG_L) say('preservative', null, `${Math.round(sulphite.value)} mg/L of sulphite: give it a day before the yeast.`);
   if (outcome.allergens.length > 0) say('allergen', null, `Holds ${outcome.allergens.join(', ')}.`);
   for (const release of outcome.releases) {

@@ -4,7 +4,7 @@ import { practice } from '../how/sources';
 import type { Yeast } from './ingredients';
 
 export interface PitchStep {
-  key: 'cool' | 'sanitise' | 'water' | 'rehydrate' | 'temper' | 'aerate' | 'pitch' | 'neck';
+  key: 'sulphite' | 'cool' | 'sanitise' | 'water' | 'rehydrate' | 'temper' | 'aerate' | 'pitch' | 'neck';
   sentence: string;
   caution: string | null;
 }
@@ -19,22 +19,27 @@ export interface PitchCheck {
 /** Warmest water for dry yeast, °C, and the largest step into the must: common practice; the packet wins. */
 const REHYDRATE_C = { min: 35, max: 40 } as const;
 const LARGEST_STEP_C = 10;
+/** Sulphite that is not bound by then holds the yeast back: common practice. */
+const SULPHITE_WAIT_H = 24;
 /** Above this yeast dies; above that glass cracks. */
 const YEAST_DIES_C = 43;
 const HOT_FOR_GLASS_C = 50;
 
+/** Whether sulphite is among what goes in. */
+export const sulphited = (lines: readonly { ingredient: { preservative: string | null } }[]): boolean => lines.some(({ ingredient }) => ingredient.preservative === 'sulphite');
+
 /** The steps from the must to the pitched vessel, and what stands in the way at the must's temperature. */
-export function pitchChecklist(input: { yeast: Yeast | null; dryYeastG: number | null; mustC: number | null; glass: boolean; sulphitedHoursAgo: number | null }): PitchCheck {
+export function pitchChecklist(input: { yeast: Yeast | null; dryYeastG: number | null; mustC: number | null; glass: boolean; /** Sulphite is among what goes in. */ sulphited: boolean }): PitchCheck {
   const { yeast, dryYeastG, mustC, glass } = input;
   const stops: string[] = [];
   if (mustC !== null && mustC >= HOT_FOR_GLASS_C && glass) stops.push('Too hot for glass: it cracks, and scalds. Cool it in metal first.');
   if (mustC !== null && mustC >= YEAST_DIES_C) stops.push(`At ${mustC} °C the yeast dies. Cool the must.`);
-  else if (mustC !== null && yeast && mustC > yeast.temperatureC.max) stops.push(`${mustC} °C is over the yeast’s ${yeast.temperatureC.max}. Cool the must.`);
-  else if (mustC !== null && yeast && mustC < yeast.temperatureC.min) stops.push(`${mustC} °C is under the yeast’s ${yeast.temperatureC.min}. Warm the must slowly.`);
-  if (input.sulphitedHoursAgo !== null && input.sulphitedHoursAgo < 24) stops.push('Sulphite went in less than a day ago. Wait, then stir well.');
+  else if (mustC !== null && yeast && mustC > yeast.temperatureC.max) stops.push(`${mustC} °C is over the yeast’s ${yeast.temperatureC.max} °C. Cool the must.`);
+  else if (mustC !== null && yeast && mustC < yeast.temperatureC.min) stops.push(`${mustC} °C is under the yeast’s ${yeast.temperatureC.min} °C. Warm the must slowly.`);
   const waterMl = dryYeastG === null ? null : Math.round(dryYeastG * 10);
   const range = yeast ? `${yeast.temperatureC.min} to ${yeast.temperatureC.max} °C` : 'the yeast’s range';
   const steps: PitchStep[] = [
+    ...(input.sulphited ? ([{ key: 'sulphite', sentence: `Wait ${SULPHITE_WAIT_H} h from when the sulphite went in, loosely covered, then stir well.`, caution: 'Sooner, and the yeast may not start. Its powder and gas hurt eyes and lungs, worst with asthma: air the room.' }] as const) : []),
     { key: 'cool', sentence: `Bring the must to ${range}.`, caution: 'Never hot liquid into cold glass. Lift a full vessel with both hands, or not at all.' },
     { key: 'sanitise', sentence: 'Clean and sanitise all that touches the must from here on.', caution: null },
     ...(dryYeastG === null

@@ -4,10 +4,13 @@ import { finingState } from '@/lib/core/additions/fining';
 import { CALL_OF_KIND, wantedJobs, type Wanted } from '@/lib/core/rounds/wanted';
 import type { Assessment, Instant } from '@/lib/core/types';
 import { notifyChange } from '../changes';
+import { silenceSecond } from '../finings/ring';
 import { feedOf } from './feed';
 
 /** A call that flickers does not drop its job before it was gone this long, ms. */
 const KEPT_MS = 3 * 3_600_000;
+/** What somebody found or did with their own hands is no flicker. */
+const SETTLES: readonly string[] = ['reading', 'neck', 'rack'];
 /** How often it is written down that the reason still stands, ms. */
 const SEEN_EVERY_MS = 30 * 60_000;
 
@@ -24,7 +27,7 @@ const lastAt = (dates: readonly (Date | null | undefined)[]): Instant | null => 
  * until its reason was gone; what nobody wants any more leaves the rounds.
  * @param assessment null: the batch is over
  */
-export async function jobsFromCalls(batch: Batch, assessment: Assessment | null, entries: readonly Pick<Entry, 'kind' | 'at' | 'neck'>[], at: Instant, transaction: Transaction): Promise<void> {
+export async function jobsFromCalls(batch: Batch, assessment: Assessment | null, entries: readonly Pick<Entry, 'kind' | 'at' | 'neck' | 'createdAt'>[], at: Instant, transaction: Transaction): Promise<void> {
   const rows = await Job.findAll({ where: { batchId: batch.id, source: { [Op.in]: ['call', 'schedule'] }, overAt: null }, transaction });
   const ticked = (kind: string) => Job.max<Date | null, Job>('doneAt', { where: { batchId: batch.id, kind, doneAt: { [Op.not]: null } }, transaction });
   const wanted =
@@ -48,14 +51,27 @@ export async function jobsFromCalls(batch: Batch, assessment: Assessment | null,
   let changed = false;
   for (const job of wanted) changed = (await keep(batch, job, rows, now, transaction)) || changed;
   const keys = new Set(wanted.map((job) => keyOf(batch.id, job)));
+  if (assessment === null) changed = (await dropTimers(batch.id, now, transaction)) || changed;
+  const settled = lastAt(entries.filter((entry) => SETTLES.includes(entry.kind)).map((entry) => entry.createdAt)) ?? 0;
   for (const row of rows) {
     if (keys.has(row.dedupeKey ?? '')) continue;
     const seen = row.seenAt ?? row.createdAt;
-    if (assessment !== null && row.source === 'call' && at - seen.getTime() < KEPT_MS && row.doneAt === null) continue;
+    if (assessment !== null && row.source === 'call' && at - seen.getTime() < KEPT_MS && settled <= seen.getTime() && row.doneAt === null) continue;
     changed ||= row.doneAt === null && row.droppedAt === null;
     await row.update({ overAt: now, droppedAt: row.droppedAt ?? (row.doneAt === null ? now : null) }, { transaction });
   }
   if (changed) await notifyChange({ cellar: batch.cellarId, kind: 'job', batch: batch.id }, transaction);
+}
+
+/** What is over is not fined any further: its clocks leave the rounds, and do not ring. */
+async function dropTimers(batchId: string, now: Date, transaction: Transaction): Promise<boolean> {
+  const timers = await Job.findAll({ where: { batchId, source: 'timer', finingId: { [Op.not]: null }, doneAt: null, droppedAt: null }, transaction });
+  for (const timer of timers) {
+    await timer.update({ droppedAt: now }, { transaction });
+    const run = await FiningRun.findByPk(timer.finingId!, { transaction });
+    if (run) await silenceSecond(run, transaction);
+  }
+  return timers.length > 0;
 }
 
 async function isClearing(batchId: string, at: Instant, transaction: Transaction): Promise<boolean> {

@@ -33,7 +33,8 @@ export const keptCost = (cost: unknown): KeptCost => ({ must: null, known: false
 
 /** All that these bottles cost; null where nothing is known. */
 export function totalCost(cost: KeptCost): Range | null {
-  if (cost.must === null && cost.other === null) return null;
+  // A sheet without a single price is no cost of nought.
+  if ((cost.must === null || (!cost.known && cost.must.hi === 0)) && cost.other === null) return null;
   const other = cost.other ?? 0;
   const must = cost.must ?? { lo: 0, value: 0, hi: 0 };
   return { lo: must.lo + other, value: must.value + other, hi: must.hi + other };

@@ -41,6 +41,18 @@ describe('is it done', () => {
     expect(checkDone(doneInput({ hydrometer: [{ at: NOW - 8 * DAY, gravity: 1.002 }, { at: NOW, gravity: 1.001 }] })).verdict).toBe('done');
   });
 
+  test('the reading it asks for settles it, however often it was read meanwhile and older as the batch is by then', () => {
+    const pitchedAt = NOW - 20 * DAY;
+    const fallen = [{ at: NOW - 6 * DAY, gravity: 1.004 }, { at: NOW - 3 * DAY, gravity: 0.9995 }, { at: NOW, gravity: 0.999 }];
+    const check = checkDone(doneInput({ pitchedAt, hydrometer: fallen }));
+    expect(check).toMatchObject({ verdict: 'not_yet', reasons: ['The last 2 readings agree, but over 3 days only; 4.3 days are asked.'] });
+    const again = check.readAgainAt!;
+    expect(again).toBeLessThan(NOW + 2 * DAY);
+    const then = (at: number) => checkDone(doneInput({ pitchedAt, at, hydrometer: [...fallen, { at, gravity: 0.999 }] })).verdict;
+    expect(then(again + 60_000)).toBe('done');
+    expect(then(again - DAY / 4)).not.toBe('done');
+  });
+
   test('equal readings do not help while the float may still fall by more than half a point a day', () => {
     expect(checkDone(doneInput({ floatRate: { lo: 0, value: 0.3, hi: 0.6 } })).verdict).toBe('not_yet');
   });

@@ -44,7 +44,7 @@ describe('original gravity as measured', () => {
 
 describe('the pitch', () => {
   const yeast = yeastNamed('mead yeast');
-  const base = { yeast, dryYeastG: 5, mustC: 20, glass: true, sulphitedHoursAgo: null };
+  const base = { yeast, dryYeastG: 5, mustC: 20, glass: true, sulphited: false };
 
   test('at the right temperature nothing stands in the way, and dry yeast gets ten times its weight of warm water', () => {
     const { steps, stops } = pitchChecklist(base);
@@ -58,9 +58,13 @@ describe('the pitch', () => {
     [{ mustC: 45, glass: false }, 'dies'],
     [{ mustC: 26 }, 'over the yeast'],
     [{ mustC: 10 }, 'under the yeast'],
-    [{ sulphitedHoursAgo: 3 }, 'less than a day'],
   ])('%o stops it', (over, word) => {
     expect(pitchChecklist({ ...base, ...over }).stops.join(' ')).toContain(word);
+  });
+
+  test('a day passes after sulphite, before anything else, and no step speaks of it where none went in', () => {
+    expect(pitchChecklist({ ...base, sulphited: true }).steps[0]).toMatchObject({ key: 'sulphite', sentence: expect.stringContaining('24 h') });
+    expect(pitchChecklist(base).steps.map((s) => s.key)).not.toContain('sulphite');
   });
 
   test('liquid yeast needs no rehydration', () => {
