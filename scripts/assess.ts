@@ -8,7 +8,7 @@ import { basename, join } from 'node:path';
 import { parseArgs } from 'node:util';
 import { parse } from 'csv-parse/sync';
 import { presentAssessment } from '../lib/contracts/assessment';
-import { instantOf, parseBatchFile, parseReadings, WrongFile, type CsvLine } from '../lib/contracts/logfile';
+import { checkSpan, instantOf, parseBatchFile, parseReadings, WrongFile, type CsvLine } from '../lib/contracts/logfile';
 import { assessEvery } from '../lib/core/assess';
 import { explain } from '../lib/core/explain';
 import { CALL_NAMES, type BatchSetup, type Instant, type Judgement, type Reading } from '../lib/core/types';
@@ -43,18 +43,25 @@ function inFile<T>(path: string, work: () => T): T {
 }
 
 function load(readingsPath: string, batchPath: string): Case {
-  const readings = inFile(readingsPath, () => {
+  const left: string[] = [];
+  const [lines, readings] = inFile(readingsPath, () => {
     const rows = parse(read(readingsPath), { info: true, skip_empty_lines: true, relax_column_count: true, comment: '#' }) as unknown as {
       info: { lines: number };
       record: string[];
     }[];
-    const lines: CsvLine[] = rows.map((row) => ({ line: row.info.lines, cells: row.record }));
-    return parseReadings(lines);
+    const cells: CsvLine[] = rows.map((row) => ({ line: row.info.lines, cells: row.record }));
+    return [cells, parseReadings(cells, left)] as const;
   });
+  for (const note of left) process.stderr.write(`${readingsPath}: ${note}\n`);
   let first: Instant | null = null;
   for (const reading of readings) if (first === null || reading.at < first) first = reading.at;
   const { setup, notes } = inFile(batchPath, () => parseBatchFile(read(batchPath), first));
   for (const note of notes) process.stderr.write(`${batchPath}: ${note}\n`);
+  const { pitchedAt, events } = setup;
+  if (pitchedAt !== null) {
+    inFile(readingsPath, () => checkSpan(pitchedAt, lines, readings, []));
+    inFile(batchPath, () => checkSpan(pitchedAt, [], [], events));
+  }
   return { setup, readings };
 }
 

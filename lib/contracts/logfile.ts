@@ -6,11 +6,12 @@ import { DRINK_KINDS, EVENT_KINDS, NECKS, type BatchSetup, type DrinkKind, type 
 /** A file that cannot be used; the message names the line or the field. */
 export class WrongFile extends Error {}
 
-const RFC3339 = /^\d{4}-\d{2}-\d{2}[T ]\d{2}:\d{2}(:\d{2}(\.\d+)?)?(Z|[+-]\d{2}:?\d{2})$/i;
+const RFC3339 = /^(\d{4})-(\d{2})-(\d{2})[T ]([01]\d|2[0-3]):\d{2}(:\d{2}(\.\d+)?)?(Z|[+-]\d{2}:?\d{2})$/i;
 
-/** Milliseconds of an RFC 3339 time with its zone; null for anything else. */
+/** Milliseconds of an RFC 3339 time with its zone; null for anything else, and for a day that its month does not have. */
 export function instantOf(text: string): Instant | null {
-  if (!RFC3339.test(text)) return null;
+  const [, year, month, day] = RFC3339.exec(text) ?? [];
+  if (day === undefined || Number(day) > new Date(Date.UTC(Number(year), Number(month), 0)).getUTCDate()) return null;
   const at = Date.parse(text.replace(' ', 'T'));
   return Number.isFinite(at) ? at : null;
 }
@@ -24,7 +25,8 @@ const time = z.string().transform((text, context) => {
   return at;
 });
 
-const gravity = z.number('must be a specific gravity such as 1.062').min(0.97, 'must be a specific gravity between 0.970 and 1.200').max(1.2, 'must be a specific gravity between 0.970 and 1.200');
+const GRAVITY = { min: 0.97, max: 1.2 };
+const gravity = z.number('must be a specific gravity such as 1.062').min(GRAVITY.min, 'must be a specific gravity between 0.970 and 1.200').max(GRAVITY.max, 'must be a specific gravity between 0.970 and 1.200');
 
 const event = z.object({
   at: time,
@@ -136,8 +138,10 @@ export interface CsvLine {
 
 const REQUIRED = ['measured_at', 'gravity', 'temperature_c'] as const;
 
-/** Readings of a CSV whose first line is the header. Throws {@link WrongFile} naming the line. */
-export function parseReadings(lines: readonly CsvLine[]): Reading[] {
+const filled = (cells: readonly string[]) => cells.findLastIndex((cell) => cell.trim() !== '') + 1;
+
+/** Readings of a CSV whose first line is the header. Throws {@link WrongFile} naming the line; what is left out of the judgement is noted. */
+export function parseReadings(lines: readonly CsvLine[], notes: string[] = []): Reading[] {
   const header = lines[0];
   if (!header) throw new WrongFile('line 1: the file is empty; a header is wanted.');
   const names = header.cells.map((cell) => cell.trim().toLowerCase());
@@ -145,6 +149,8 @@ export function parseReadings(lines: readonly CsvLine[]): Reading[] {
   for (const name of REQUIRED) {
     if (column(name) < 0) throw new WrongFile(`line ${header.line}: no column "${name}"; the header needs ${REQUIRED.join(', ')}.`);
   }
+  const twice = names.find((name, i) => name !== '' && names.indexOf(name) < i);
+  if (twice !== undefined) throw new WrongFile(`line ${header.line}: the column "${twice}" is there twice.`);
   const number = (row: CsvLine, name: string): number | null => {
     const cell = (row.cells[column(name)] ?? '').trim();
     if (cell === '') return null;
@@ -159,11 +165,15 @@ export function parseReadings(lines: readonly CsvLine[]): Reading[] {
     if (at === null) throw new WrongFile(`line ${row.line}: ${name} "${cell}" is not a time with its zone, such as 2026-03-04T06:00:00Z.`);
     return at;
   };
-  return lines.slice(1).map((row) => {
+  const outside: CsvLine[] = [];
+  const readings = lines.slice(1).map((row) => {
+    // A decimal comma would otherwise move every value into the next column.
+    if (filled(row.cells) > names.length) throw new WrongFile(`line ${row.line}: ${filled(row.cells)} values for ${names.length} columns; decimals need a point.`);
     const at = instant(row, 'measured_at');
     if (at === null) throw new WrongFile(`line ${row.line}: measured_at is empty.`);
     const sg = number(row, 'gravity');
     if (sg === null) throw new WrongFile(`line ${row.line}: gravity is empty.`);
+    if (sg < GRAVITY.min || sg > GRAVITY.max) outside.push(row);
     return {
       at,
       gravity: sg,
@@ -171,5 +181,28 @@ export function parseReadings(lines: readonly CsvLine[]): Reading[] {
       battery: column('battery_v') < 0 ? null : number(row, 'battery_v'),
       receivedAt: instant(row, 'received_at'),
     };
+  });
+  const [first] = outside;
+  if (first) {
+    const told = `line ${first.line}: gravity "${first.cells[column('gravity')]}" is not a specific gravity between 0.970 and 1.200`;
+    // One is a float that was knocked; all of them are another unit.
+    if (outside.length === readings.length) throw new WrongFile(`${told}, nor is that of any other line.`);
+    notes.push(`${told}; ${outside.length === 1 ? 'it is' : `${outside.length} such readings are`} left out.`);
+  }
+  return readings;
+}
+
+const LONGEST_YEARS = 10;
+
+/** No batch lasts so long: a time that far from the pitch is a clock that was never set. Throws {@link WrongFile} naming the line or the field. */
+export function checkSpan(pitchedAt: Instant, lines: readonly CsvLine[], readings: readonly Reading[], events: BatchSetup['events']): void {
+  const latest = pitchedAt + LONGEST_YEARS * 365.25 * 86_400_000;
+  const tooLate = (at: Instant | null | undefined) => at != null && at > latest;
+  const told = `more than ${LONGEST_YEARS} years after the pitch (${new Date(pitchedAt).toISOString()})`;
+  readings.forEach((reading, i) => {
+    if (tooLate(reading.at) || tooLate(reading.receivedAt)) throw new WrongFile(`line ${lines[i + 1]!.line}: ${tooLate(reading.at) ? 'measured_at' : 'received_at'} is ${told}.`);
+  });
+  events.forEach((event, i) => {
+    if (tooLate(event.at) || tooLate(event.knownAt)) throw new WrongFile(`events.${i}.${tooLate(event.at) ? 'at' : 'known_at'}: is ${told}.`);
   });
 }

@@ -3,7 +3,7 @@ import { mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { instantOf, parseBatchFile, parseReadings } from '../../../lib/contracts/logfile';
+import { checkSpan, instantOf, parseBatchFile, parseReadings } from '../../../lib/contracts/logfile';
 
 const rows = (...lines: string[]) => lines.map((line, i) => ({ line: i + 1, cells: line.split(',') }));
 const HEADER = 'measured_at,gravity,temperature_c';
@@ -13,13 +13,36 @@ describe('the readers of a log', () => {
   it('take times with a zone and nothing else', () => {
     expect(instantOf('2026-03-04T06:00:00Z')).toBe(Date.UTC(2026, 2, 4, 6));
     expect(instantOf('2026-03-04T07:00:00+01:00')).toBe(Date.UTC(2026, 2, 4, 6));
-    for (const text of ['2026-03-04T06:00:00', '2026-02-30', 'yesterday', '1772604000', '']) expect(instantOf(text)).toBeNull();
+    expect(instantOf('2028-02-29T06:00:00Z')).toBe(Date.UTC(2028, 1, 29, 6));
+    for (const text of ['2026-03-04T06:00:00', '2026-02-30', 'yesterday', '1772604000', '', '2026-02-30T06:00:00Z', '2026-02-29T06:00:00Z', '2026-13-01T06:00:00Z', '2026-03-04T24:00:00Z']) expect(instantOf(text)).toBeNull();
   });
 
   it('name the line of a wrong reading', () => {
     expect(() => parseReadings(rows(HEADER, '2026-03-04T06:00:00Z,1.05,20', '2026-03-04T07:00:00Z,heavy,20'))).toThrow('line 3: gravity "heavy" is not a number.');
     expect(() => parseReadings(rows(HEADER, 'noon,1.05,20'))).toThrow(/^line 2: measured_at "noon"/);
     expect(() => parseReadings(rows('measured_at,gravity'))).toThrow(/no column "temperature_c"/);
+  });
+
+  it('refuse a decimal comma, which would put every value one column on, and a column that is there twice', () => {
+    expect(() => parseReadings(rows(HEADER, '2026-03-04T06:00:00Z,1,050,20'))).toThrow('line 2: 4 values for 3 columns');
+    expect(parseReadings(rows(HEADER, '2026-03-04T06:00:00Z,1.05,20,, '))).toHaveLength(1);
+    expect(() => parseReadings(rows('measured_at,gravity,gravity,temperature_c'))).toThrow('line 1: the column "gravity" is there twice.');
+  });
+
+  it('note a reading that is no gravity, and refuse a file of another unit', () => {
+    const notes: string[] = [];
+    expect(parseReadings(rows(HEADER, '2026-03-04T06:00:00Z,1.05,20', '2026-03-04T07:00:00Z,1.3,20', '2026-03-04T08:00:00Z,0,20'), notes)).toHaveLength(3);
+    expect(notes).toEqual(['line 3: gravity "1.3" is not a specific gravity between 0.970 and 1.200; 2 such readings are left out.']);
+    expect(() => parseReadings(rows(HEADER, '2026-03-04T06:00:00Z,1050,20', '2026-03-04T07:00:00Z,1049,20'))).toThrow(/^line 2: gravity "1050" is not a specific gravity/);
+  });
+
+  it('refuse a clock that was never set, which would ask for a century of steps', () => {
+    const lines = rows(HEADER, '2026-03-04T06:00:00Z,1.05,20', '2106-02-07T06:28:15Z,1.05,20');
+    const readings = parseReadings(lines);
+    expect(() => checkSpan(readings[0]!.at, lines, readings, [])).toThrow(/^line 3: measured_at is more than 10 years after the pitch/);
+    expect(() => checkSpan(readings[0]!.at, lines, readings.slice(0, 1), [])).not.toThrow();
+    const { events } = parseBatchFile(JSON.stringify({ ...BATCH, events: [{ at: '2106-03-04T06:00:00Z', kind: 'rack' }] }), null).setup;
+    expect(() => checkSpan(readings[0]!.at, [], [], events)).toThrow(/^events\.0\.at: is more than 10 years/);
   });
 
   it('take columns in any order, and what is optional', () => {
