@@ -1,6 +1,8 @@
+import { randomUUID } from 'node:crypto';
 import { NextRequest } from 'next/server';
 import { QueryTypes } from 'sequelize';
 import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest';
+import { POST as acknowledgeAlert } from '@/app/api/v1/alerts/[id]/acknowledge/route';
 import { GET as listBatches, POST as startBatch } from '@/app/api/v1/batches/route';
 import { Batch } from '@/db/models';
 import { problem } from '@/lib/contracts/common';
@@ -29,6 +31,17 @@ const LEAST = 20;
 const counts: Record<string, number> = {};
 afterAll(() => {
   for (const [name, count] of Object.entries(counts)) expect(count, name).toBeGreaterThanOrEqual(LEAST);
+});
+
+describe('a request without a body', () => {
+  const bare = (headers: Record<string, string> = {}, body?: string) => ({ method: 'POST', body, headers: { cookie, 'sec-fetch-site': 'same-origin', ...headers } });
+  it('is asked for no type: it leaves out all that may be left out', async () => {
+    const id = randomUUID();
+    const acknowledge = (init: ReturnType<typeof bare>) => acknowledgeAlert(new NextRequest(`${HOUSE}/api/v1/alerts/${id}/acknowledge`, init), { params: Promise.resolve({ id }) });
+    expect((await acknowledge(bare())).status).toBe(404);
+    expect((await acknowledge(bare({ 'content-type': 'text/plain' }))).status).toBe(415);
+    expect((await startBatch(new NextRequest(`${HOUSE}/api/v1/batches`, bare()), {})).status).toBe(422);
+  });
 });
 
 describe.each(Object.entries(HOSTILE_BODIES))('a new batch, %s', (name, cases) => {
