@@ -33,12 +33,22 @@ function evaluate(seed: number, groups: readonly (readonly [string, number])[]):
   return result;
 }
 
-const { values } = parseArgs({ options: { seed: { type: 'string' }, out: { type: 'string', default: '.data/evaluation' }, misses: { type: 'boolean' } } });
-const seeds = values.seed === undefined ? REPORTING_SEEDS : [Number(values.seed)];
-if (seeds.some((seed) => !Number.isInteger(seed))) {
-  process.stderr.write(`--seed "${values.seed}": a whole number is wanted.\n`);
+function wrong(sentence: string): never {
+  process.stderr.write(`${sentence}\n`);
   process.exit(2);
 }
+
+function options() {
+  try {
+    return parseArgs({ options: { seed: { type: 'string' }, out: { type: 'string', default: '.data/evaluation' }, misses: { type: 'boolean' } } });
+  } catch (error) {
+    return wrong(`${(error as Error).message}. Use: npm run evaluate -- [--seed N] [--out DIR] [--misses]`);
+  }
+}
+
+const { values } = options();
+const seeds = values.seed === undefined ? REPORTING_SEEDS : [Number(values.seed)];
+if (values.seed?.trim() === '' || seeds.some((seed) => !Number.isInteger(seed))) wrong(`--seed "${values.seed}": a whole number is wanted.`);
 
 process.stdout.write(`Seeds used for tuning: ${TUNING_SEEDS.join(', ')}. Seeds kept for reporting: ${REPORTING_SEEDS.join(', ')}. This run: ${seeds.join(', ')}.\n`);
 process.stdout.write('One look every 3 h with what had been received by then; false alarms per batch-month of 30.4 days; "thumb" are rules of thumb on raw readings.\n');

@@ -13,7 +13,7 @@ const url = (...protocols: string[]) =>
     .optional();
 
 const schema = z.object({
-  NODE_ENV: z.enum(['development', 'production', 'test']).default('production'),
+  NODE_ENV: z.enum(['development', 'production', 'test'], 'must be development, production or test').default('production'),
   HOST: z.string().min(1).default('127.0.0.1'),
   PORT: port(3000),
   MQTT_PORT: port(1883),
@@ -25,14 +25,14 @@ const schema = z.object({
   PUBLIC_URL: url('http', 'https'),
   AUTH_SECRET: z.string().min(32, 'must have at least 32 characters; unset it to have one made').optional(),
   SMTP_URL: url('smtp', 'smtps'),
-  MAIL_FROM: z.string().min(3).default('Fallbright <watch@fallbright.example>'),
+  MAIL_FROM: z.string().min(3, 'must be an address').default('Fallbright <watch@fallbright.example>'),
   /** The pair for push messages; unset: made and kept in DATA_DIR. */
   VAPID_PUBLIC_KEY: z.string().regex(/^[A-Za-z0-9_-]{80,}$/, 'must be a key of `npx web-push generate-vapid-keys`').optional(),
   VAPID_PRIVATE_KEY: z.string().regex(/^[A-Za-z0-9_-]{40,}$/, 'must be a key of `npx web-push generate-vapid-keys`').optional(),
   MAILBOX_SMTP_PORT: port(2525),
   MAILBOX_PORT: port(3001),
   S3_ENDPOINT: url('http', 'https'),
-  S3_BUCKET: z.string().min(3).default('fallbright'),
+  S3_BUCKET: z.string().min(3, 'must have at least 3 characters').default('fallbright'),
   /** Of the local stand-in, where S3_ENDPOINT is unset; unset too: the first free one from 3002 on. */
   S3_PORT: port(3002).unwrap().optional(),
   AWS_REGION: z.string().min(1).default('us-east-1'),
@@ -41,7 +41,7 @@ const schema = z.object({
   /** 1: push services inside this network and over plain http; unset: only outside production. */
   ALLOW_PRIVATE_TARGETS: z.enum(['0', '1'], 'must be 0 or 1').optional(),
   DEMO: z.enum(['0', '1'], 'must be 0 or 1').default('0').transform((value) => value === '1'),
-  LOG_LEVEL: z.enum(['fatal', 'error', 'warn', 'info', 'debug', 'trace', 'silent']).default('info'),
+  LOG_LEVEL: z.enum(['fatal', 'error', 'warn', 'info', 'debug', 'trace', 'silent'], 'must be fatal, error, warn, info, debug, trace or silent').default('info'),
 });
 
 export type Env = Omit<z.infer<typeof schema>, 'PUBLIC_URL' | 'SMTP_URL'> & {

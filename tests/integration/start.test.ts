@@ -108,6 +108,8 @@ describe('bash scripts/start.sh', { timeout: 2 * PATIENCE_MS }, () => {
     ['AUTH_SECRET', 'short', /The variable AUTH_SECRET must have at least 32 characters/],
     ['DATABASE_URL', 'mysql://x', /The variable DATABASE_URL must be a URL that begins with postgres:\/\//],
     ['DEMO', 'yes', /The variable DEMO must be 0 or 1/],
+    ['LOG_LEVEL', 'loud', /The variable LOG_LEVEL must be fatal, error, warn, info, debug, trace or silent\./],
+    ['S3_BUCKET', 'a', /The variable S3_BUCKET must have at least 3 characters\./],
   ])('names a bad variable: %s=%s', async (name, value, sentence) => {
     const start = new Start({ [name]: value });
     expect(await start.ended).toBe(1);
