@@ -1,8 +1,9 @@
 'use client';
 
+import { useMemo } from 'react';
 import type { z } from 'zod';
 import type { JudgementBody, VerdictChangeList } from '../contracts/assessment';
-import type { BATCH_STATES, BatchBody, BatchList, createBatch as createBatchSchema, SeriesBody, UpdateBatch } from '../contracts/batches';
+import type { BATCH_STATES, BatchBody, BatchList, createBatch as createBatchSchema, SeriesAnswer, SeriesBody, UpdateBatch } from '../contracts/batches';
 import { sendJson, withQuery } from './fetcher';
 import { isPath, refresh, useResource } from './use-resource';
 
@@ -33,8 +34,9 @@ export function useVerdictChanges(id: string | null) {
 
 /** The sensor's readings, thinned to `points` with their extremes kept; without a span the whole batch. */
 export function useSeries(id: string | null, query: { from?: string; to?: string; points?: number } = {}) {
-  const { data, ...rest } = useResource<SeriesBody>(id && withQuery(`/batches/${id}/series`, query));
-  return { series: data, ...rest };
+  const { data, ...rest } = useResource<SeriesAnswer>(id && withQuery(`/batches/${id}/series`, query));
+  const series = useMemo<SeriesBody | undefined>(() => data && { ...data, at: data.at.map((time) => Date.parse(time) / 1000) }, [data]);
+  return { series, ...rest };
 }
 
 export const isOfBatch = (id: string) => (path: string) => path.startsWith(`/batches/${id}`);

@@ -266,11 +266,14 @@ export const seriesSchema = z.object({
   to: z.string(),
   /** Readings before thinning. */
   count: z.number().int(),
-  at: z.array(z.number()),
+  at: z.array(z.number()).describe('seconds since 1970-01-01T00:00:00Z'),
   gravity: z.array(z.number().nullable()),
   temperature: z.array(z.number().nullable()),
 });
 export type SeriesBody = z.infer<typeof seriesSchema>;
+/** The same for programs, which are promised RFC 3339; the pages that get many at once take seconds. */
+export const seriesAnswer = seriesSchema.extend({ at: z.array(z.string()) });
+export type SeriesAnswer = z.infer<typeof seriesAnswer>;
 
 /** `GET /api/v1/shelf`: all lanes in one answer. */
 export const laneSchema = batchSchema.extend({

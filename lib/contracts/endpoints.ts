@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { acknowledgeAlert, alertList, alertQuery, alertSchema, resolveAlert } from './alerts';
 import { assessmentQuery, assessmentSchema, judgementSchema, verdictChangeList } from './assessment';
-import { batchList, batchQuery, batchSchema, createBatch, createEntry, entryList, entrySchema, seriesQuery, seriesSchema, shelfQuery, shelfSchema, updateBatch } from './batches';
+import { batchList, batchQuery, batchSchema, createBatch, createEntry, entryList, entrySchema, seriesAnswer, seriesQuery, shelfQuery, shelfSchema, updateBatch } from './batches';
 import { id, pageQuery } from './common';
 import { byId, endpoint, type Endpoint } from './endpoint';
 import { endpointsAfter } from './endpoints-after';
@@ -33,7 +33,7 @@ export const endpoints = {
   createBatch: endpoint({ method: 'POST', path: '/batches', summary: 'Start a batch', access: 'batches.create', body: createBatch, response: batchSchema, status: 201 }),
   getBatch: endpoint({ method: 'GET', path: '/batches/{id}', summary: 'One batch', access: 'batches.read', params: byId, response: batchSchema, status: 200 }),
   updateBatch: endpoint({ method: 'PATCH', path: '/batches/{id}', summary: 'Change a batch, end it or open it again', access: 'batches.update', params: byId, body: updateBatch, response: batchSchema, status: 200 }),
-  getSeries: endpoint({ method: 'GET', path: '/batches/{id}/series', summary: 'The sensor’s readings, thinned with their extremes kept', access: 'batches.read', params: byId, query: seriesQuery, response: seriesSchema, status: 200 }),
+  getSeries: endpoint({ method: 'GET', path: '/batches/{id}/series', summary: 'The sensor’s readings, thinned with their extremes kept', access: 'batches.read', params: byId, query: seriesQuery, response: seriesAnswer, status: 200 }),
   getAssessment: endpoint({ method: 'GET', path: '/batches/{id}/assessment', summary: 'The judgement now, or as it was known at a past time', access: 'batches.read', params: byId, query: assessmentQuery, response: assessmentSchema, status: 200 }),
   getJudgement: endpoint({ method: 'GET', path: '/batches/{id}/judgement', summary: 'The judgement with its fitted curve, forecast and gas', access: 'batches.read', params: byId, query: assessmentQuery, response: judgementSchema, status: 200 }),
   listVerdictChanges: endpoint({ method: 'GET', path: '/batches/{id}/assessments', summary: 'Past judgements, each kept when a verdict changed, newest first', access: 'batches.read', params: byId, query: pageQuery, response: verdictChangeList, status: 200 }),

@@ -1,5 +1,7 @@
 import fc from 'fast-check';
-import { describe, expect, it } from 'vitest';
+import { NextRequest } from 'next/server';
+import { describe, expect, it, vi } from 'vitest';
+import { GET } from '@/app/api/v1/batches/[id]/series/route';
 import { database } from '@/db/client';
 import { Assignment } from '@/db/models';
 import { ManualClock } from '@/lib/clock';
@@ -7,6 +9,9 @@ import { getSeries } from '@/lib/services/batches/get-series';
 import { NotFoundError } from '@/lib/errors';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildMember, buildSensor, writeReadings, type ReadingInput } from '../support/factories';
+import { sessionCookie } from '../support/web';
+
+vi.mock('server-only', () => ({}));
 
 const START = Date.UTC(2026, 2, 1);
 const MINUTE_MS = 60_000;
@@ -140,6 +145,13 @@ describe('the series of a batch', () => {
     expect(series.at[0]).toBe(START / 1000 + DAY_S);
     expect(series.at.at(-1)).toBe(START / 1000 + 2 * DAY_S - 900);
     expect(await getSeries(actor, batch.id, { from: day(100), to: day(101), points: 200 })).toMatchObject({ count: 0, at: [], gravity: [], temperature: [] });
+  });
+
+  it('tells its times to programs as RFC 3339 in UTC', async () => {
+    const { actor, batch } = await batchWith(quarterly(3, () => 1.05));
+    const { cookie } = await sessionCookie(actor.personId);
+    const answer = await GET(new NextRequest(`http://127.0.0.1/api/v1/batches/${batch.id}/series`, { headers: { cookie } }), { params: Promise.resolve({ id: batch.id }) });
+    expect(await answer.json()).toMatchObject({ from: '2026-03-01T00:00:00.000Z', count: 3, at: ['2026-03-01T00:00:00.000Z', '2026-03-01T00:15:00.000Z', '2026-03-01T00:30:00.000Z'], gravity: [1.05, 1.05, 1.05] });
   });
 
   it('is not found in another cellar', async () => {
