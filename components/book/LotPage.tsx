@@ -3,7 +3,6 @@
 import Link from 'next/link';
 import { useState, type CSSProperties } from 'react';
 import { Sheet } from '@/components/ui/Sheet';
-import { sizeWords } from '@/components/bench/words';
 import { drinkHex } from '@/components/charts/palette';
 import { Shares } from '@/components/share/Shares';
 import { Photos } from '@/components/photos/Photos';
@@ -11,22 +10,22 @@ import { Tastings } from '@/components/tasting/Tastings';
 import { Button, LinkButton } from '@/components/ui/Button';
 import { Facts, type Fact } from '@/components/ui/Facts';
 import { Haze } from '@/components/ui/Haze';
-import { ErrorState, FormError } from '@/components/ui/Notice';
+import { ErrorState } from '@/components/ui/Notice';
 import { useMoney } from '@/components/ui/money';
 import { useNow } from '@/components/ui/now';
-import { GroupBar, PageHead } from '@/components/ui/Page';
+import { PageHead } from '@/components/ui/Page';
 import { gravityText } from '@/components/ui/units';
-import { ClientError } from '@/lib/client/fetcher';
-import { undoOpening, useLot } from '@/lib/client/lots';
+import { useLot } from '@/lib/client/lots';
 import { useMe } from '@/lib/client/me';
 import type { LotBody } from '@/lib/contracts/lots';
 import { HOW_COUNTED } from '@/lib/core/how/lots';
+import { Became } from './Became';
 import { BenchRecord } from './BenchRecord';
 import { Caution, Lifted } from './Caution';
 import { EditLot } from './EditLot';
 import { LotBottles } from './LotBottles';
 import { Serve } from './Serve';
-import { costWords, dayWords, leftWords, OPENING_WORDS, SPARKLE_WORDS, strengthWords } from './words';
+import { costWords, dayWords, leftWords, SPARKLE_WORDS, strengthWords } from './words';
 
 /** One lot of the cellar book. */
 export function LotPage({ id }: { id: string }) {
@@ -76,7 +75,7 @@ export function LotPage({ id }: { id: string }) {
         <div className="min-w-0">
           <LotBottles lot={lot} />
           <Tastings lotId={lot.id} timeZone={timeZone} now={now} mayTaste={may('tastings.write')} />
-          <Openings lot={lot} day={day} mayUndo={may('lots.serve')} />
+          <Became lot={lot} day={day} mayUndo={may('lots.serve')} />
         </div>
         <div className="min-w-0 wide:border-l">
           <BenchRecord lot={lot} day={day} />
@@ -109,51 +108,4 @@ function factsOf(lot: LotBody, day: (at: string) => string, money: (amount: numb
     { name: 'opened, given', says: `${lot.counts.opened}, ${lot.counts.given}`, how: HOW_COUNTED },
     { name: 'cost a litre', says: costWords(lot, money), how: lot.how.cost },
   ];
-}
-
-function Openings({ lot, day, mayUndo }: { lot: LotBody; day: (at: string) => string; mayUndo: boolean }) {
-  const [failed, setFailed] = useState<string | null>(null);
-  if (lot.openings.length === 0 && lot.moves.length === 0) return null;
-  async function undo(id: string) {
-    try {
-      await undoOpening(lot.id, id);
-      setFailed(null);
-    } catch (error) {
-      setFailed(error instanceof ClientError ? error.message : 'It was not put back. Try again.');
-    }
-  }
-  return (
-    <section aria-label="What became of them">
-      <GroupBar word="What became of them" />
-      {failed && <FormError>{failed}</FormError>}
-      <ul className="type-label">
-        {lot.openings.map((opening) => (
-          <li key={opening.id} className="flex flex-wrap items-baseline gap-x-4 border-b border-rule px-(--margin) py-1.5">
-            <span className="text-ink2">{day(opening.at)}</span>
-            <span className={opening.kind === 'gushed' ? 'font-semibold text-madder' : 'font-semibold'}>
-              {opening.count} × {sizeWords(opening.size_ml)} {OPENING_WORDS[opening.kind]}
-              {opening.to && ` to ${opening.to}`}
-            </span>
-            {opening.note && <span className="type-reason text-ink2">{opening.note}</span>}
-            <span className="ml-auto text-ink2">{opening.by?.name}</span>
-            {mayUndo && (
-              <button type="button" onClick={() => void undo(opening.id)} className="min-h-8 text-ink2 underline underline-offset-4 max-strip:min-h-11">
-                Put back
-              </button>
-            )}
-          </li>
-        ))}
-        {lot.moves.map((move, index) => (
-          <li key={index} className="flex flex-wrap gap-x-4 border-b border-rule px-(--margin) py-1.5">
-            <span className="text-ink2">{day(move.at)}</span>
-            <span>
-              {move.count} × {sizeWords(move.size_ml)} from {move.from?.name ?? 'no named place'} to {move.to?.name ?? 'no named place'}
-            </span>
-            {move.override_reason && <span className="type-reason text-madder">against a stop: {move.override_reason}</span>}
-            <span className="ml-auto text-ink2">{move.by?.name}</span>
-          </li>
-        ))}
-      </ul>
-    </section>
-  );
 }
