@@ -68,11 +68,21 @@ const STALL_JUDGED_OVER_S = 48 * 3600;
 /** Two hydrometer readings count as equal within this, when they lie this far apart. */
 const EQUAL = { gravity: 0.0011, apartS: 36 * 3600 };
 
+const HOURS_IN = { days: 24, day: 24, h: 1, min: 1 / 60 } as const;
+
+/** How long it has been flat by the call's own sentence, h: the bracket beside it says no other span. */
+export function flatHours(headline: string): number | null {
+  const span = /: flat for (.+)\.$/.exec(headline)?.[1];
+  const parts = span ? [...span.matchAll(/(\d+) (days?|h|min)/g)] : [];
+  return parts.length > 0 ? parts.reduce((sum, [, count, unit]) => sum + Number(count) * HOURS_IN[unit as keyof typeof HOURS_IN], 0) : null;
+}
+
 function bracketOf(batch: Batch, rings: Picture['rings'], now: number): Bracket | null {
   const stalled = batch.assessment?.calls.stalled;
   const gravity = batch.assessment?.gravity?.value;
   if (stalled?.verdict === 'yes' && stalled.kind !== 'sluggish' && stalled.since && gravity !== undefined) {
-    const from = seconds(stalled.since) - STALL_JUDGED_OVER_S;
+    const said = flatHours(stalled.headline);
+    const from = said === null ? seconds(stalled.since) - STALL_JUDGED_OVER_S : now - said * 3600;
     return { from, to: now, gravity, words: `flat ${duration(now - from)}`, kind: 'flat' };
   }
   const last = rings.at(-1);

@@ -3,7 +3,8 @@ import { drinkHex, drinkShare, isDark, luminance } from '@/components/charts/pal
 import { hazeTile } from '@/components/charts/haze';
 import { keepClear, placePosts, rightmostRoom } from '@/components/charts/place';
 import { temperatureWords } from '@/components/charts/over';
-import { pictureOf, postsOf } from '@/components/charts/from-wire';
+import { flatHours, pictureOf, postsOf } from '@/components/charts/from-wire';
+import { spanWords } from '@/lib/core/calls/words';
 import { twinOf } from '@/components/charts/twin';
 import { afterKey, isWhole, moved, NARROWEST_S, within, zoomed } from '@/components/charts/zoom';
 import { HOUR, NOW, picture, straight } from './fixtures';
@@ -161,6 +162,15 @@ describe('a picture from what the server tells', () => {
     expect(made.bed!.hi).toBeCloseTo(1.018, 9);
     expect(made.range).toBeNull();
     expect(made.posts.map((post) => post.letters)).toEqual(['P']);
+  });
+
+  it('has a bracket as long as the sentence beside it says', () => {
+    const stalled = { verdict: 'yes', kind: 'cold', since: iso(NOW - 82 * HOUR), headline: 'Stopped at 1.025: flat for 5 days.' };
+    const judged = { ...batch, assessment: { gravity: { value: 1.025 }, calls: { stalled, sensor: { verdict: 'no' }, neck: { evidence: [] } } } } as unknown as typeof batch;
+    const made = pictureOf({ batch: judged, series: undefined, drawn: undefined, entries: [] }, NOW, 'UTC');
+    expect(made.bracket).toMatchObject({ from: NOW - 5 * 24 * HOUR, to: NOW, words: 'flat 5 days' });
+    for (const hours of [31, 4 + 1 / 6, 72]) expect(flatHours(`Stopped at 1.041: flat for ${spanWords(hours)}.`)).toBeCloseTo(hours, 9);
+    expect(flatHours('Slow: 0.4 points a day.')).toBeNull();
   });
 
   it('never draws gas below nothing', () => {
