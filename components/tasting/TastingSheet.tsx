@@ -63,7 +63,7 @@ export function TastingSheet({ guest, onSend }: { guest: boolean; onSend: (taste
   return (
     <form onSubmit={(event) => void send(event)} className="flex flex-col gap-3">
       {ASPECTS.map((aspect) => (
-        <Choice key={aspect} label={`${aspect}, 1 poor to 5 fine`} value={aspects[aspect]} onChoose={(value) => setAspects((before) => ({ ...before, [aspect]: value }))} options={POINTS.map((value) => ({ value, name: value === '' ? 'not said' : value }))} />
+        <Choice key={aspect} label={`${aspect}, 1 poor to 5 fine`} value={aspects[aspect]} onChoose={(value) => setAspects((before) => ({ ...before, [aspect]: value }))} options={POINTS.map((value) => ({ value, name: value === '' ? <span className="whitespace-nowrap">not said</span> : value }))} />
       ))}
       <div className="grid grid-cols-2 gap-3">
         <Select label="sparkle" value={sparkle} onChange={(event) => setSparkle(event.target.value as Found | '')}>

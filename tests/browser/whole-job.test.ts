@@ -218,6 +218,11 @@ describe('one batch, from the idea to the tasting note', () => {
     await page.goto(`${house.web.url}/book/${at.lot}`);
     await page.getByRole('button', { name: 'Taste it' }).click();
     const sheet = page.getByRole('dialog');
+    await sheet.getByLabel('in your words').fill('Dry, and a little flat.');
+    await page.keyboard.press('Escape');
+    await sheet.getByText('What you wrote here is not kept yet.').waitFor();
+    await sheet.getByRole('button', { name: 'Go on writing' }).click();
+    expect(await sheet.getByLabel('in your words').inputValue()).toBe('Dry, and a little flat.');
     await sheet.getByLabel('score of 10').selectOption('7');
     await sheet.getByRole('button', { name: 'Tasted' }).click();
     await sheet.waitFor({ state: 'hidden' });
