@@ -75,7 +75,7 @@ export function AlertsPage() {
       <>
         <PageHead title="Alerts" />
         <ErrorState title="The alerts did not load" onRetry={() => [open.retry, acknowledged.retry, resolved.retry, retryMe].forEach((retry) => retry())}>
-          {(error ?? meError)?.message} Mails still go out.
+          {(error ?? meError)?.message} Until they do, look at the vessels themselves.
         </ErrorState>
       </>
     );

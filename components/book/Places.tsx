@@ -2,6 +2,7 @@
 
 import { useState } from 'react';
 import { degrees } from '@/components/batch/figures';
+import { Button } from '@/components/ui/Button';
 import { Haze } from '@/components/ui/Haze';
 import { FormError } from '@/components/ui/Notice';
 import { State } from '@/components/ui/StateMark';
@@ -14,7 +15,7 @@ const LINK = 'type-label min-h-8 text-ink2 underline underline-offset-4 max-stri
 
 /** Places with their room; full is said, not only drawn. */
 export function Places({ mayManage }: { mayManage: boolean }) {
-  const { places, error } = usePlaces();
+  const { places, error, retry } = usePlaces();
   const [changed, setChanged] = useState<string | null>(null);
   const [failed, setFailed] = useState<string | null>(null);
 
@@ -27,7 +28,14 @@ export function Places({ mayManage }: { mayManage: boolean }) {
     }
   }
 
-  if (error && !places) return <p className="type-body px-(--margin) py-3 text-ink2">The places did not load. {error.message}</p>;
+  if (error && !places) {
+    return (
+      <div className="type-body flex flex-wrap items-center gap-3 px-(--margin) py-3 text-ink2">
+        <p>The places did not load. {error.message}</p>
+        <Button onClick={retry}>Try again</Button>
+      </div>
+    );
+  }
   if (!places) return <Haze height={60} label="Loading the places" className="m-(--margin)" />;
   return (
     <>
