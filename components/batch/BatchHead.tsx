@@ -34,7 +34,14 @@ function Facts({ batch, facts, phone }: { batch: BatchBody; facts: readonly Fact
           <dt className="type-label truncate text-[0.71875rem] text-ink2">{names[fact.name] ?? fact.name}</dt>
           {/* Words are longer than figures and would touch their neighbour. */}
           <dd className={`font-mono font-semibold leading-5 ${phone && !/\d/.test(fact.figure) ? 'text-[0.8125rem]' : 'whitespace-nowrap text-[0.96875rem]'}`}>
-            {fact.arriving ? <Haze height={20} label={`Loading: ${names[fact.name] ?? fact.name}`} className="w-14" /> : fact.figure}
+            {fact.arriving ? (
+              <Haze height={20} label={`Loading: ${names[fact.name] ?? fact.name}`} className="w-14" />
+            ) : (
+              // A sensor's name may be sixty letters long.
+              <span className={phone ? '' : 'inline-block max-w-[16ch] truncate align-bottom'} title={phone ? undefined : fact.figure}>
+                {fact.figure}
+              </span>
+            )}
             {fact.more && !phone && <span className="type-label pl-1.5 text-ink2">{fact.more}</span>}
           </dd>
         </div>

@@ -47,7 +47,7 @@ function LotRow({ lot, timeZone, now }: { lot: LotSummary; timeZone: string; now
   const { money } = useMoney();
   return (
     <li className="flex items-center border-b hover:bg-lit">
-      <Link href={`/book/${lot.id}`} className="drink grid min-w-0 flex-1 gap-x-5 gap-y-1 py-2.5 pl-(--margin) pr-(--margin) no-underline -outline-offset-2 strip:grid-cols-[10px_minmax(0,1.4fr)_minmax(0,1fr)_minmax(0,1fr)] strip:items-center" style={{ '--drink': drinkHex(lot.batch.drink_colour) } as CSSProperties}>
+      <Link href={`/book/${lot.id}`} className="drink grid min-w-0 flex-1 grid-cols-[minmax(0,1fr)] gap-x-5 gap-y-1 py-2.5 pl-(--margin) pr-(--margin) no-underline -outline-offset-2 strip:grid-cols-[10px_minmax(0,1.4fr)_minmax(0,1fr)_minmax(0,1fr)] strip:items-center" style={{ '--drink': drinkHex(lot.batch.drink_colour) } as CSSProperties}>
         <span aria-hidden className="hidden h-full min-h-9 border border-ink bg-(--drink-fill) strip:block" />
         <span className="min-w-0">
           <span className="type-name block break-words">{lot.name}</span>

@@ -50,13 +50,13 @@ export function Turns({ messages, maySet }: { messages: MessagesBody; maySet: bo
       <ol>
         {first.length > 0 && (
           <li className="grid items-baseline gap-x-5 border-b border-rule px-(--margin) py-2 strip:grid-cols-[minmax(0,1fr)_minmax(0,16rem)_auto]">
-            <span className="type-name-low">{list(first.map(({ name }) => name))}</span>
+            <span className="type-name-low min-w-0">{list(first.map(({ name }) => name))}</span>
             <span className="type-label text-ink2">at once</span>
           </li>
         )}
         {order.map((person, index) => (
           <li key={person.id} className="grid items-center gap-x-5 gap-y-1 border-b border-rule px-(--margin) py-2 strip:grid-cols-[minmax(0,1fr)_minmax(0,16rem)_auto]">
-            <span className="type-name-low">{person.name}</span>
+            <span className="type-name-low min-w-0">{person.name}</span>
             <span className="type-label text-ink2">
               <Sentence>{turnWords(index + offset, after)}</Sentence>
             </span>

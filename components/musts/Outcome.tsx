@@ -151,8 +151,12 @@ export function Outcome({ result, kind, vesselL, missing }: { result: MustResult
         </div>
         <Spread name="Original gravity" {...og} from={1} to={og.hi > 1.13 ? 1.2 : 1.14} write={gravityText} />
         <p className="type-label mt-0.5 text-ink2">
-          {gravityEnds(og)}
-          {pitchDiffers && `; ${pitchWords(outcome.gravityAtPitch.value.value, og.value)}`}
+          {[
+            gravityText(og.lo) !== gravityText(og.hi) && gravityEnds(og),
+            pitchDiffers && pitchWords(outcome.gravityAtPitch.value.value, og.value),
+          ]
+            .filter(Boolean)
+            .join('; ')}
         </p>
         <How how={outcome.originalGravity.how} of="original gravity" />
       </div>

@@ -69,10 +69,10 @@ export function Header({ glance, places }: { glance: CellarGlance; places: reado
         <NavLinks places={places} />
       </div>
       <div className="type-label ml-auto hidden items-center gap-x-7 text-ink2 strip:flex">
-        <div className={glance.cellars.length > 1 ? '' : 'hidden wide:block'}>
+        <div className={`max-w-[32ch] ${glance.cellars.length > 1 ? '' : 'hidden wide:block'}`}>
           <CellarMenu glance={glance} words={place} />
         </div>
-        {heardAt !== null && <span className="hidden wide:inline">sensors heard {clock(heardAt, timeZone)}</span>}
+        {heardAt !== null && <span className="hidden whitespace-nowrap wide:inline">sensors heard {clock(heardAt, timeZone)}</span>}
         <DayNight />
         <PersonMenu glance={glance} />
       </div>

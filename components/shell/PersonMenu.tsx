@@ -16,7 +16,7 @@ export function shortName(name: string): string {
 export function PersonMenu({ glance }: { glance: CellarGlance }) {
   if (!glance.person) return null;
   return (
-    <Menu word={<b className="font-semibold">{shortName(glance.person)}</b>} className="text-ink">
+    <Menu word={<b className="block max-w-[18ch] truncate font-semibold">{shortName(glance.person)}</b>} className="text-ink">
       {(close) => (
         <>
           <Link href="/settings" className={MENU_ITEM} onClick={close}>

@@ -59,7 +59,7 @@ export function Tastings({ lotId, timeZone, now, mayTaste }: { lotId: string; ti
               <li key={tasting.id} className="flex items-end gap-4 border-b border-rule px-(--margin) py-2">
                 <div className="min-w-0 flex-1">
                   <p className="type-label flex flex-wrap gap-x-4 text-ink2">
-                    <span className="font-semibold text-ink">
+                    <span className="min-w-0 font-semibold text-ink">
                       {tasting.by.name ?? 'somebody'}
                       {tasting.by.guest && ', guest'}
                     </span>

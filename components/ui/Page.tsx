@@ -15,7 +15,7 @@ export function PageHead({ title, meta, children, size = 'head' }: { title: Reac
 export function GroupBar({ word, note, as: Tag = 'h2' }: { word: string; note?: ReactNode; as?: 'h2' | 'h3' | 'div' }) {
   return (
     <Tag className="type-label flex min-h-[19px] items-center gap-2.5 border-b bg-desk px-(--margin) text-ink2">
-      <span className="shrink-0 font-bold text-ink">{word}</span>
+      <span className={`shrink-0 font-bold text-ink ${note ? 'max-w-[65%]' : 'max-w-full'}`}>{word}</span>
       {note}
     </Tag>
   );
