@@ -17,8 +17,8 @@ function Line({ day, note, who, act, children }: { day: string; note?: ReactNode
         {children}
         {note}
       </span>
-      <span className="flex max-w-[32ch] items-baseline justify-end gap-x-4 text-ink2 max-strip:max-w-[20ch]">
-        <span className="min-w-0 truncate" title={who}>
+      <span className="flex items-baseline justify-end gap-x-4 text-ink2">
+        <span className="max-w-[20ch] truncate max-strip:max-w-[16ch]" title={who}>
           {who}
         </span>
         {act}
