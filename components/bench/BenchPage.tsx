@@ -2,6 +2,8 @@
 
 import { degrees, gravityText } from '@/components/batch/figures';
 import { useMemo, useState } from 'react';
+import { NotKeptYet } from '@/components/ui/NotKeptYet';
+import { useKept } from '@/components/ui/use-kept';
 import Link from 'next/link';
 import type { CSSProperties } from 'react';
 import { drinkHex } from '@/components/charts/palette';
@@ -56,7 +58,9 @@ export function BenchPage({ id }: { id: string }) {
       </EmptyState>
     );
   }
-  return <Bench key={facts.batch.id} facts={facts} timeZone={me.cellar.time_zone} mayBottle={may('lots.bottle')} mayOverride={may('lots.override')} />;
+  // What was typed for another volume is not what is bottled now.
+  const keptAs = [me.person.id, 'bench', facts.batch.id, facts.batch.volume_l].join(' ');
+  return <Bench key={facts.batch.id} keptAs={keptAs} facts={facts} timeZone={me.cellar.time_zone} mayBottle={may('lots.bottle')} mayOverride={may('lots.override')} />;
 }
 
 const drawn = ({ batch, done }: BenchFacts): VesselState => ({
@@ -72,14 +76,15 @@ const drawn = ({ batch, done }: BenchFacts): VesselState => ({
 });
 
 interface BenchProps {
+  keptAs: string;
   facts: BenchFacts;
   timeZone: string;
   mayBottle: boolean;
   mayOverride: boolean;
 }
 
-function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
-  const [draft, setDraft] = useState(() => newDraft(facts));
+function Bench({ keptAs, facts, timeZone, mayBottle, mayOverride }: BenchProps) {
+  const [draft, setDraft, found, forget] = useKept(keptAs, () => newDraft(facts));
   const { form, errors } = useMemo(() => formOf(draft, facts), [draft, facts]);
   const request = useMemo(() => form && requestOf(form, facts), [form, facts]);
   const verdict = useMemo(() => request && judgeBench(request), [request]);
@@ -118,15 +123,16 @@ function Bench({ facts, timeZone, mayBottle, mayOverride }: BenchProps) {
       </div>
       <div className="border-b-[1.5px] border-ink">{verdict ? <Verdict verdict={verdict} /> : <Unfilled errors={errors ?? {}} facts={facts} />}</div>
       <div className="bg-desk px-(--margin) pb-4 wide:border-r-[1.5px] wide:border-ink">
+        {found && <NotKeptYet className="-mx-(--margin)" />}
         <Done facts={facts} timeZone={timeZone} />
-        <BenchForm draft={draft} errors={errors ?? {}} facts={facts} onChange={(part) => setDraft((before) => ({ ...before, ...part }))} />
+        <BenchForm draft={draft} errors={errors ?? {}} facts={facts} onChange={(part) => setDraft({ ...draft, ...part })} />
         <div className="mt-4">
-          <BottleIt facts={facts} form={form} request={request} verdict={verdict} mayBottle={mayBottle} mayOverride={mayOverride} />
+          <BottleIt facts={facts} form={form} request={request} verdict={verdict} mayBottle={mayBottle} mayOverride={mayOverride} onBottled={forget} />
         </div>
       </div>
       <div className="min-w-0 max-wide:border-t-[1.5px] max-wide:border-ink">
         {verdict && request && <Pictures verdict={verdict} request={request} timeZone={timeZone} />}
-        {verdict?.verdict === 'stop' && <Ways ways={verdict.ways} onUse={(way) => way.request && setDraft((before) => takeWay(before, way.request!))} />}
+        {verdict?.verdict === 'stop' && <Ways ways={verdict.ways} onUse={(way) => way.request && setDraft(takeWay(draft, way.request))} />}
         {verdict?.verdict === 'safe' && request && now !== null && <After now={now} cellarC={request.cellarC} primed={primes(request)} timeZone={timeZone} />}
         {verdict && request && <BottleTable verdict={verdict} request={request} />}
         {assumed && <p className="type-reason border-t px-(--margin) py-2 text-ink2">{assumed}</p>}

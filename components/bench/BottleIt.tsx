@@ -54,10 +54,11 @@ interface BottleItProps {
   verdict: BenchVerdict | null;
   mayBottle: boolean;
   mayOverride: boolean;
+  onBottled: () => void;
 }
 
 /** The dose, and the act. Stopped: no dose, the button held back, and for a brewer the written reason. */
-export function BottleIt({ facts, form, request, verdict, mayBottle, mayOverride }: BottleItProps) {
+export function BottleIt({ facts, form, request, verdict, mayBottle, mayOverride, onBottled }: BottleItProps) {
   const router = useRouter();
   const { places } = usePlaces();
   const { currency } = useMoney();
@@ -92,6 +93,7 @@ export function BottleIt({ facts, form, request, verdict, mayBottle, mayOverride
     setFailed(null);
     try {
       const lot = await bottleBatch(facts.batch.id, { ...form, at: new Date().toISOString(), code: code.trim() || null, name: name.trim() || null, place_id: place || null, ends_batch: ends, other_cost: other, override_reason: stopped ? reason.trim() : null });
+      onBottled();
       router.push(`/book/${lot.id}`);
     } catch (error) {
       setSending(false);

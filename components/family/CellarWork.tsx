@@ -82,6 +82,12 @@ export function CellarWork({ batchId }: { batchId: string }) {
   if (!batch || !me || clockMs === null) return <Haze height={300} className="m-(--margin)" label="Loading the batch" />;
   const timeZone = me.cellar.time_zone;
   const now = clockMs / 1000;
+  const work = `${me.person.id} ${batch.id}`;
+  const turnTo = (next: Tab) => {
+    setTab(next);
+    // A reload stays where the work is.
+    window.history.replaceState(null, '', `?do=${next}`);
+  };
   const mayAlter = may('entries.alter') && batch.state === 'working';
   const mayMove = may('cellarwork.do') && batch.state === 'working';
   const shown = TABS.filter((item) => mayMove || !['rack', 'top-up', 'split', 'blend'].includes(item.value));
@@ -103,7 +109,7 @@ export function CellarWork({ batchId }: { batchId: string }) {
       </PageHead>
       {drink && <InIt drink={drink} />}
       <div className="border-b px-(--margin) py-2.5">
-        <FilterTabs label="Do" value={tab} onChoose={setTab} tabs={shown} />
+        <FilterTabs label="Do" value={tab} onChoose={turnTo} tabs={shown} />
       </div>
       <div className={`px-(--margin) py-4 ${MOVES.includes(tab) ? 'wide:grid wide:grid-cols-[600px_minmax(0,1fr)] wide:gap-x-12' : ''}`}>
         {tab === 'additions' &&
@@ -116,8 +122,8 @@ export function CellarWork({ batchId }: { batchId: string }) {
           ) : (
             <Haze height={160} label="Loading what is in it" />
           ))}
-        {tab === 'rack' && <RackForm key="rack" batch={batch} rack now={now} timeZone={timeZone} />}
-        {tab === 'top-up' && <RackForm key="top-up" batch={batch} rack={false} now={now} timeZone={timeZone} />}
+        {tab === 'rack' && <RackForm key={`rack ${work}`} keptAs={`rack ${work}`} batch={batch} rack now={now} timeZone={timeZone} />}
+        {tab === 'top-up' && <RackForm key={`top-up ${work}`} keptAs={`top-up ${work}`} batch={batch} rack={false} now={now} timeZone={timeZone} />}
         {tab === 'fine' && <Finings batchId={batch.id} volumeL={batch.volume_l} now={now} timeZone={timeZone} mayDo={mayMove} />}
         {tab === 'split' && <SplitForm batch={batch} now={now} timeZone={timeZone} />}
         {tab === 'blend' && <BlendForm batch={batch} now={now} timeZone={timeZone} />}

@@ -1,6 +1,8 @@
 'use client';
 
 import { useState, type FormEvent } from 'react';
+import { NotKeptYet } from '@/components/ui/NotKeptYet';
+import { useKept } from '@/components/ui/use-kept';
 import { timeTyped } from '@/components/batch/entry-form';
 import { WhenField } from '@/components/batch/WhenField';
 import { litres, points, typedGravity, typedNumber } from '@/components/batch/figures';
@@ -53,16 +55,16 @@ const FIELD_OF: Record<string, string> = { left_l: 'left', 'vessel.vessel_l': 'v
 const fieldOf = (path: string): string => FIELD_OF[path] ?? (/top_up(\.\d+)?\.volume_l$/.test(path) ? 'topUp' : /original_gravity$/.test(path) ? 'original' : /gravity$/.test(path) ? 'gravity' : /batch_id$/.test(path) ? 'from' : path);
 
 /** Racking off the lees, or topping up alone: what stayed behind, where it went, what filled the room. */
-export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rack: boolean; now: number; timeZone: string }) {
+export function RackForm({ keptAs, batch, rack, now, timeZone }: { keptAs: string; batch: BatchBody; rack: boolean; now: number; timeZone: string }) {
   const { batches } = useBatches({ state: 'working' });
   const { drink } = useDrink(batch.id);
-  const [draft, setDraft] = useState({ left: '', vessel: '', tag: '', place: '', neck: '', sulphite: '', what: (rack ? '' : 'water') as What, topUp: '', gravity: '', original: '', from: '', at: '', text: '' });
+  const [draft, setDraft, found, forget] = useKept(keptAs, () => ({ left: '', vessel: '', tag: '', place: '', neck: '', sulphite: '', what: (rack ? '' : 'water') as What, topUp: '', gravity: '', original: '', from: '', at: '', text: '' }));
   const [errors, setErrors] = useState<Record<string, string>>({});
   const [failed, setFailed] = useState<string | null>(null);
   const [sending, setSending] = useState(false);
   const [moved, setMoved] = useState<MovedBody | null>(null);
   const [clientId] = useState(() => crypto.randomUUID());
-  const set = (field: keyof typeof draft) => (event: { target: { value: string } }) => setDraft((before) => ({ ...before, [field]: event.target.value }));
+  const set = (field: keyof typeof draft) => (event: { target: { value: string } }) => setDraft({ ...draft, [field]: event.target.value });
 
   function tell(fields: Record<string, readonly string[]>) {
     const known = Object.fromEntries(Object.entries(fields).flatMap(([path, said]) => (said[0] ? [[fieldOf(path), said[0]]] : [])));
@@ -90,6 +92,7 @@ export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rac
     setSending(true);
     try {
       setMoved('left_l' in form.data ? await rackBatch(batch.id, form.data) : await topUpBatch(batch.id, form.data));
+      forget();
     } catch (error) {
       const told = error instanceof ClientError ? error : null;
       if (told && Object.keys(told.fields).length > 0) tell(told.fields);
@@ -116,6 +119,7 @@ export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rac
   return (
     <div className="flex flex-col gap-6 wide:grid wide:grid-cols-[600px_minmax(0,424px)] wide:gap-x-12">
       <form onSubmit={(event) => void send(event)} noValidate className="flex max-w-[600px] flex-col gap-4">
+        {found && <NotKeptYet />}
         {rack && (
           <>
             <UnitField measure="volume" label="Left on the lees and in the hose" {...given('left')} />
@@ -166,7 +170,7 @@ export function RackForm({ batch, rack, now, timeZone }: { batch: BatchBody; rac
             <p className="type-reason text-ink2">Keep air out: a full vessel and a hose that reaches the bottom. Lift a full glass vessel with both hands, one under it, never by its neck; nothing hot into cold glass.</p>
           </>
         )}
-        <WhenField value={draft.at} onType={(at) => setDraft((before) => ({ ...before, at }))} now={now} timeZone={timeZone} error={errors.at} />
+        <WhenField value={draft.at} onType={(at) => setDraft({ ...draft, at })} now={now} timeZone={timeZone} error={errors.at} />
         <Field label="Note" autoComplete="off" maxLength={2000} value={draft.text} onChange={set('text')} />
         {failed && <FormError>{failed}</FormError>}
         <div className="wide:hidden">{comes}</div>

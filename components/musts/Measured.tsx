@@ -15,7 +15,7 @@ import type { MustBody } from '@/lib/contracts/musts';
 import { gapOf, measuredOriginal, type Measurement } from '@/lib/core/must/original-gravity';
 import { pitchChecklist, sulphited } from '@/lib/core/must/pitch';
 import type { Range } from '@/lib/core/units/range';
-import { useKept } from './use-kept';
+import { useKept } from '@/components/ui/use-kept';
 import { ends } from './words';
 
 const isNumber = (value: number | null): value is number => value !== null && Number.isFinite(value);

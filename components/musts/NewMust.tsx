@@ -8,9 +8,9 @@ import { PageHead } from '@/components/ui/Page';
 import { useMe } from '@/lib/client/me';
 import { createMust } from '@/lib/client/musts';
 import { emptyDraft } from './draft';
-import { NotKeptYet } from './NotKeptYet';
+import { NotKeptYet } from '@/components/ui/NotKeptYet';
 import { useKeep } from './use-keep';
-import { useKept } from './use-kept';
+import { useKept } from '@/components/ui/use-kept';
 import { Workbench } from './Workbench';
 
 export function NewMust() {
