@@ -144,6 +144,9 @@ describe('what is done to a drink', () => {
 
     await page.getByText('Rack', { exact: true }).first().click();
     await page.getByLabel('Left on the lees and in the hose').fill('0.3');
+    await page.reload();
+    await page.getByText('What you wrote here before is still on the page.').waitFor();
+    expect(await page.getByLabel('Left on the lees and in the hose').inputValue()).toBe('0.3');
     await page.getByLabel('What', { exact: true }).selectOption('water');
     const comes = page.getByRole('region', { name: 'What it comes to' }).filter({ visible: true });
     await page.getByLabel('How much').fill('0.4');

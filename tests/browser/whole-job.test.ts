@@ -142,6 +142,10 @@ describe('one batch, from the idea to the tasting note', () => {
     await page.getByLabel('warmest since it finished').fill('18');
     await page.getByLabel('maker’s figure').fill('4.5');
     await page.getByLabel('left on lees').fill('0.1');
+    await page.reload();
+    await page.getByText('What you wrote here before is still on the page.').waitFor();
+    expect(await page.getByLabel('maker’s figure').inputValue()).toBe('4.5');
+    expect(await page.getByLabel('warmest since it finished').inputValue()).toBe('18');
     await page.getByRole('button', { name: /lightly sparkling/ }).click();
     await page.getByRole('button', { name: 'Bottle it' }).click();
     await page.getByLabel('they will stand').selectOption({ index: 1 });
