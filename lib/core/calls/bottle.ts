@@ -1,34 +1,34 @@
 import type { Call } from '../types';
 import { VOLUMES_PER_POINT } from '../gas/gas';
+import type { Remaining } from '../stages/remaining';
 import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, fallingWords, gravityWords, pointsWords, rateWords } from './words';
 
-/** Points that may still fall, nine times in ten; null without a level. */
-function mostToCome(scene: Scene): number | null {
-  const left = scene.level === null ? null : scene.watch.remainingNow();
-  return left && Math.max(0, left.most);
+/** What may still fall; null without a level. */
+function leftToCome(scene: Scene): Remaining | null {
+  return scene.level === null ? null : scene.watch.remainingNow();
 }
 
 /** Volumes of CO2 that could still come in the bottle, nine times in ten. */
 export function worstExtraVolumes(scene: Scene): number | null {
-  const most = mostToCome(scene);
-  return most === null ? null : most * VOLUMES_PER_POINT;
+  const left = leftToCome(scene);
+  return left && Math.max(0, left.most) * VOLUMES_PER_POINT;
 }
 
 /** Has it stopped for good? The one call that is wrong only on the safe side. */
 export function bottleCall(scene: Scene): Call {
   const { watch, level, rate } = scene;
   const top = watch.zoneTop();
-  const most = mostToCome(scene);
+  const left = leftToCome(scene);
   const atMost = watch.bottlePoints();
   const worst = worstExtraVolumes(scene);
   const figures = [
     ...(level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG')]),
-    ...(most === null ? [] : [evidence('may still fall', most, atMost, 'points')]),
+    ...(left === null ? [] : [evidence('may still fall, 7 times in 10', Math.max(0, left.likely), atMost, 'points')]),
     ...(rate ? [evidence('fall', Math.max(0, rate.value), 0.5, 'points/d')] : []),
     ...(worst === null ? [] : [evidence('worst extra carbonation', worst, 1, 'volumes')]),
   ];
-  const changesIt = `Changes it: ${gravityWords(top)} or less, and at most ${pointsWords(atMost)} that may still fall.`;
+  const changesIt = `Changes it: ${gravityWords(top)} or less, and at most ${pointsWords(atMost)} that may still fall, 7 times in 10.`;
   if (watch.refermenting.on) {
     const fallen = level !== null && watch.plateau !== null ? pointsWords(watch.plateau - level) : 'More than 1.5 points';
     return call('hold', 'Do not bottle: it works again.', `${fallen} below where it had come to rest.`, {
@@ -57,7 +57,7 @@ export function bottleCall(scene: Scene): Call {
       evidence: figures,
       act: watch.sweetHeld()
         ? 'Do not prime it: its sugar waits for any yeast that lives. Keep the bottles cool, and open one after two weeks.'
-        : worst !== null && worst >= 1
+        : level > top || (worst !== null && worst >= 1)
           ? 'Check the gravity with a hydrometer before you prime.'
           : 'Prime for the bottles you have, not for more.',
       changesIt: 'Changes it: a fall of 0.5 points a day.',

@@ -1,7 +1,7 @@
 /** Where the figures of a judgement come from: the batch page, the shelf and the rounds ask here. */
 import { GAS_L_PER_L_PER_POINT, VOLUMES_PER_POINT } from '../gas/gas';
-import { RACK_PACE, RACK_POINTS, RACK_TAIL_POINTS } from '../stages/ending';
-import { BOTTLE_LEAST, BOTTLE_MOST } from '../stages/remaining';
+import { ABOVE_END_POINTS, AT_REST_POINTS, RACK_PACE, RACK_POINTS, RACK_TAIL_POINTS } from '../stages/ending';
+import { BOTTLE_LEAST, BOTTLE_MOST, STALL_POINTS, STALL_ROOM } from '../stages/remaining';
 import { TEMPERATURE_MARGIN_C } from '../stages/watch';
 import type { CallName } from '../types';
 import { how, type How, type InputTuple } from './how';
@@ -83,7 +83,7 @@ const RULES: Record<CallName, { formula: string; source: Parameters<typeof how>[
   stalled: { formula: 'stopped: under 0.5 points a day for 48 hours, or under 0.35 for 72, well above where the yeast’s range and tolerance let it end. Slow: under 2 points a day with more than 5 days to go', source: SOURCES.ownRule },
   temperature: { formula: `median of 3 hours: more than ${TEMPERATURE_MARGIN_C} °C outside the yeast’s range as told, until it is back inside`, source: SOURCES.told },
   rack: { formula: `at its expected end or near it, falling less than ${RACK_PACE} points a day, and at most ${RACK_POINTS} points that may still come, 9 times in 10 (${RACK_TAIL_POINTS} by the end of the record alone), at two looks in a row; where the sensor gives nothing, by its curve at half the pace`, source: SOURCES.ownRule },
-  bottle: { formula: `inside the expected end, three days that fall less than a point in all, nothing that climbs or waits for warmth, no sugar added for 5 days, and at most ${BOTTLE_MOST} points that may still come, 9 times in 10, by the last 4 to 12 days and by the last 4 to 14, fewer the higher it rests above where its yeast ends, down to ${BOTTLE_LEAST}; each such point makes ${VOLUMES_PER_POINT} volumes in a closed bottle`, source: ours('our own; 1 point gives 1.01 g/L of CO2 by Balling’s split. Two or three equal readings days apart are common practice') },
+  bottle: { formula: `inside the expected end (or up to ${ABOVE_END_POINTS} points above it where less than ${AT_REST_POINTS} may still come, 9 times in 10), three days that fall less than a point in all, nothing that climbs or waits for warmth, no sugar added for 5 days, and at most ${BOTTLE_MOST} points that may still come, 7 times in 10, and less than a volume of gas, 9 times in 10 (${STALL_ROOM} times the points where it rests more than ${STALL_POINTS} above where its yeast ends), by the last 4 to 12 days and by the last 4 to 14, fewer the higher it rests above where its yeast ends, down to ${BOTTLE_LEAST}; each such point makes ${VOLUMES_PER_POINT} volumes in a closed bottle`, source: ours('our own; 1 point gives 1.01 g/L of CO2 by Balling’s split. Two or three equal readings days apart are common practice') },
   sensor: { formula: 'silent after 6 hours, or six of its own intervals where that is longer; stuck where its noise falls under 0.22 of what is usual for it (0.18 where it speaks seldom); adrift where a hydrometer says 4 points else', source: SOURCES.ownRule },
 };
 

@@ -19,6 +19,13 @@ const BOTTLE_PACE = 0.7;
 /** Fall over three days, points a day, under which they count as quiet: less than a hydrometer shows, a point in all (the trade's readings three days apart). */
 const QUIET_PACE = 1 / 3;
 
+/** Points above the expected end, and above where its yeast usually ends, at which it may be bottled all the same where surely no more than so many are to come (ours): the range of a yeast is often a little wrong, and what stalls lies higher. */
+export const ABOVE_END_POINTS = 1.2;
+const ABOVE_YEAST_POINTS = 6;
+export const AT_REST_POINTS = 0.6;
+/** Points that make a volume of gas in a closed bottle. */
+const VOLUME_POINTS = 1 / VOLUMES_PER_POINT;
+
 /** The rules of the end: finished, to be racked, to be bottled. */
 export class Ending extends Peak {
   protected judgeEnd(hour: number): void {
@@ -48,15 +55,14 @@ export class Ending extends Peak {
       hold(this.rack, hour, () => asked && (calm(line24) || calm(this.line(12))) && this.leavesLittle(), 2, () => line24 !== null && -line24.slope - 1.64 * line24.se > RACK_PACE);
     }
 
-    const still = slow && inside && upper48 < BOTTLE_PACE && !this.rising.on && !this.refermenting.on && !sugary && this.quietSinceAddition(120, 168);
-    // A steady small fall shows in what it leaves to come, a whole volume of gas, before two days of it are beyond doubt.
-    const less = 1 / VOLUMES_PER_POINT;
+    const still = slow && (inside || this.restsJustAbove(ground)) && upper48 < BOTTLE_PACE && !this.rising.on && !this.refermenting.on && !sugary && this.quietSinceAddition(120, 168);
     hold(
       this.bottle,
       hour,
-      () => still && !this.mayOnlyBeCold() && this.leavesLess(this.bottlePoints()) && this.threeQuietDays() && this.bothEndsSaySo(),
+      () => still && !this.mayOnlyBeCold() && this.isLittleForBottles(this.remainingNow()) && this.threeQuietDays() && this.bothEndsSaySo(),
       2,
-      () => (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on || (slow && this.remainingNow() !== null && !this.leavesLess(less)),
+      // A steady small fall shows in what it leaves to come, a whole volume of gas, before two days of it are beyond doubt.
+      () => (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on || (slow && this.remainingNow() !== null && !this.leavesLess(VOLUME_POINTS)),
     );
   }
 
@@ -64,6 +70,12 @@ export class Ending extends Peak {
   private leavesLess(points: number): boolean {
     const left = this.remainingNow();
     return left !== null && left.most < points;
+  }
+
+  /** A little above the expected end, and surely at rest there. */
+  private restsJustAbove(ground: number | null): boolean {
+    if (ground === null || !this.peaked.on || this.stuck.on || this.coldNow()) return false;
+    return ground <= this.zoneTop() + ABOVE_END_POINTS && ground <= this.fgPrior().mean + ABOVE_YEAST_POINTS && this.leavesLess(AT_REST_POINTS);
   }
 
   /** Little enough to be racked: by curve and tail as they are weighed, or by the tail alone. */
@@ -76,7 +88,7 @@ export class Ending extends Peak {
   private bothEndsSaySo(): boolean {
     const level = this.levelNow();
     const long = this.tail() && this.longTail();
-    return level !== null && long !== null && this.againstRange(level, long).most < this.bottlePoints();
+    return level !== null && long !== null && this.isLittleForBottles(this.againstRange(level, long));
   }
 
   /** The float is stuck or silent. */

@@ -3,7 +3,7 @@ import type { Tail } from '../series/tail';
 import { abvBalling } from '../strength/strength';
 import { sgOf } from '../units/convert';
 import { Figures } from './figures';
-import { bottlePoints, held, mixed, remaining, shareOfTail, type Remaining } from './remaining';
+import { bottleMost, bottlePoints, held, mixed, remaining, shareOfTail, type Remaining } from './remaining';
 
 /** Hours between two views of the tail, which hardly changes from look to look. */
 const TAIL_H = 6;
@@ -102,11 +102,24 @@ export class Outlook extends Figures {
     return remaining(both.value, both.sd);
   }
 
-  /** Points that may still come, nine times in ten, when it may be bottled. What was stabilised at rest does not go on to where its yeast ends. */
+  /** Points that may still come, seven times in ten, when it may be bottled. What was stabilised at rest does not go on to where its yeast ends. */
   bottlePoints(): number {
+    return bottlePoints(this.aboveYeastsEnd(), this.spreadOfYeastsEnd());
+  }
+
+  /** What may still come is little for bottles. */
+  protected isLittleForBottles(left: Remaining | null): boolean {
+    return left !== null && left.likely < this.bottlePoints() && left.most < bottleMost(this.aboveYeastsEnd(), this.spreadOfYeastsEnd());
+  }
+
+  private aboveYeastsEnd(): number {
     const level = this.levelNow();
+    return level === null || this.sweetHeld() ? 0 : level - this.fgPrior().mean;
+  }
+
+  private spreadOfYeastsEnd(): number {
     const { mean, sd } = this.fgPrior();
-    return bottlePoints(level === null || this.sweetHeld() ? 0 : level - mean, Math.hypot(sd, this.track.calibrationSd(mean)));
+    return Math.hypot(sd, this.track.calibrationSd(mean));
   }
 
   /** The end of the record tells what is left. */

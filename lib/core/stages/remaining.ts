@@ -1,7 +1,12 @@
-/** Points that may still come, nine times in ten, when a batch may be bottled that rests no higher than where its yeast ends, and of one two spreads above that (ours). */
-export const BOTTLE_MOST = 1.3;
-export const BOTTLE_LEAST = 0.9;
+import { VOLUMES_PER_POINT } from '../gas/gas';
+
+/** Points that may still come, seven times in ten, when a batch may be bottled that rests no higher than where its yeast ends, and of one two spreads above that (ours). */
+export const BOTTLE_MOST = 0.95;
+export const BOTTLE_LEAST = 0.66;
 const HIGH_SPREADS = 2;
+/** Points above where its yeast ends from which what rests may have stalled, and by how much more than that may come nine times in ten there (ours). */
+export const STALL_POINTS = 3;
+export const STALL_ROOM = 1.37;
 
 /** The same for a level so many points above where its yeast ends, which is known to `spread`: what rests high is more often only slow. */
 export function bottlePoints(above: number, spread: number): number {
@@ -9,10 +14,16 @@ export function bottlePoints(above: number, spread: number): number {
   return BOTTLE_MOST - height * (BOTTLE_MOST - BOTTLE_LEAST);
 }
 
-/** Points still to fall, how well that is known, and the most it may be nine times in ten. */
+/** Points that may still come, nine times in ten, when it may be bottled: less than make a volume of gas, and of what may have stalled hardly more than seven times in ten. */
+export function bottleMost(above: number, spread: number): number {
+  return above > STALL_POINTS ? STALL_ROOM * bottlePoints(above, spread) : 1 / VOLUMES_PER_POINT;
+}
+
+/** Points still to fall, how well that is known, and the most it may be seven times and nine times in ten. */
 export interface Remaining {
   value: number;
   sd: number;
+  likely: number;
   most: number;
 }
 
@@ -24,7 +35,7 @@ interface Known {
 /** Share of the fall, by the curve, from which the tail tells of what is left (own simulations). */
 const TAIL_SHOWS_END_FROM = 0.85;
 
-export const remaining = (value: number, sd: number): Remaining => ({ value, sd, most: value + 1.28 * sd });
+export const remaining = (value: number, sd: number): Remaining => ({ value, sd, likely: value + 0.5 * sd, most: value + 1.28 * sd });
 
 /** Two independent estimates as one, weighted by their variances. */
 export function held(a: Known, b: Known): Known {

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { BOTTLE_LEAST, BOTTLE_MOST, bottlePoints, held, mixed, remaining, shareOfTail } from '../../../lib/core/stages/remaining';
+import { BOTTLE_LEAST, BOTTLE_MOST, bottleMost, bottlePoints, STALL_POINTS, STALL_ROOM, held, mixed, remaining, shareOfTail } from '../../../lib/core/stages/remaining';
 
 describe('what may still come of a batch to be bottled', () => {
   it('is less the higher it rests above where its yeast ends, and no more below that', () => {
@@ -10,11 +10,19 @@ describe('what may still come of a batch to be bottled', () => {
     // The surer the yeast's end is, the sooner it counts.
     expect(bottlePoints(2, 1)).toBeLessThan(bottlePoints(2, 3));
   });
+
+  it('makes less than a volume of gas at worst, and of what rests as high as a stall hardly more than is likely', () => {
+    expect(bottleMost(0, 4) * 0.51).toBeCloseTo(1, 12);
+    expect(bottleMost(STALL_POINTS, 4) * 0.51).toBeCloseTo(1, 12);
+    expect(bottleMost(STALL_POINTS + 0.1, 4)).toBeCloseTo(STALL_ROOM * bottlePoints(STALL_POINTS + 0.1, 4), 12);
+    expect(bottleMost(8, 4)).toBeLessThan(1);
+  });
 });
 
 describe('what is still to fall', () => {
-  it('is at most its mean and 1.28 standard deviations, nine times in ten', () => {
+  it('is at most its mean and 1.28 standard deviations nine times in ten, and half of one seven times in ten', () => {
     expect(remaining(2, 1).most).toBeCloseTo(3.28, 12);
+    expect(remaining(2, 1).likely).toBeCloseTo(2.5, 12);
   });
 
   it('of two independent estimates lies between them, nearer to the surer, and is surer than either', () => {
