@@ -160,13 +160,20 @@ describe('the calls', () => {
   });
 
   it('take a level a little above the range for the end after days of rest, but ask for a hydrometer before the bottle', () => {
-    // With its doubt, done is 2.8 or less here, and stuck 4.5 or more.
-    const high = (day: number): number => modelGravity('kinetic', [55, 3.7, -1, 0.2, -1.2, -1], day);
+    // With its doubt, done is 2.8 or less here (4.0 where it surely rests), and stuck 4.5 or more.
+    const high = (day: number): number => modelGravity('kinetic', [55, 4.12, -1, 0.2, -1.2, -1], day);
     const { calls, stage } = at(30, record(30, high, () => 19, 0.3));
     expect(stage).toBe('terminal');
     expect(calls.rack.verdict).toBe('yes');
     expect(calls.stalled.verdict).toBe('no');
     expect(calls.bottle).toMatchObject({ verdict: 'unknown' });
+    expect(calls.bottle.act).toMatch(/hydrometer/);
+  });
+
+  it('let a batch that surely rests just above the range be bottled, once a hydrometer has agreed', () => {
+    const high = (day: number): number => modelGravity('kinetic', [55, 3.5, -1, 0.2, -1.2, -1], day);
+    const { calls } = at(30, record(30, high, () => 19, 0.3));
+    expect(calls.bottle).toMatchObject({ verdict: 'yes' });
     expect(calls.bottle.act).toMatch(/hydrometer/);
   });
 
