@@ -1,10 +1,22 @@
-import { types } from 'pg';
+import pg from 'pg';
 import { Sequelize, type Transaction } from 'sequelize';
 import { databaseUrl } from '@/lib/config/env';
 import { initModels } from './models';
 
 // bigint keys are counters far below 2^53: numbers are safe and easier to use.
-types.setTypeParser(types.builtins.INT8, Number);
+pg.types.setTypeParser(pg.types.builtins.INT8, Number);
+
+/**
+ * Sequelize hears a connection's errors only some way after its sign-in. A server
+ * that dies in between says so in the same packet, and an error nobody hears ends
+ * the process; the pool finds such a connection dead at its next question.
+ */
+class HeardClient extends pg.Client {
+  constructor(config?: string | pg.ClientConfig) {
+    super(config);
+    this.on('error', () => undefined);
+  }
+}
 
 const POOL = { max: 10, acquire: 5_000, idle: 10_000 };
 const STATEMENT_TIMEOUT_MS = 30_000;
@@ -13,6 +25,7 @@ const STATEMENT_TIMEOUT_MS = 30_000;
 export function connect(url: string, options: { max?: number; applicationName?: string } = {}): Sequelize {
   const sequelize = new Sequelize(url, {
     dialect: 'postgres',
+    dialectModule: { ...pg, Client: HeardClient },
     logging: false,
     pool: { ...POOL, max: options.max ?? POOL.max },
     dialectOptions: {

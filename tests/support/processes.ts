@@ -33,10 +33,13 @@ export async function startProcess(file: string, variables: Record<string, strin
   alive.add(child);
   const lines: Array<Record<string, unknown>> = [];
   const stray: string[] = [];
+  let told = false;
   child.stderr.setEncoding('utf8').on('data', (text: string) => stray.push(text));
   const ended = new Promise<number | null>((done) =>
-    child.on('exit', (code) => {
+    child.on('exit', (code, signal) => {
       alive.delete(child);
+      // Else a test that waits for it learns only that it waited in vain.
+      if (code !== 0 && !told) console.error(`${file} ended by itself with ${signal ?? code}: ${stray.join('')} ${JSON.stringify(lines.at(-1) ?? {})}`);
       done(code);
     }),
   );
@@ -52,7 +55,10 @@ export async function startProcess(file: string, variables: Record<string, strin
   return {
     pid: child.pid!,
     lines,
-    kill: (signal) => child.kill(signal),
+    kill: (signal) => {
+      told = true;
+      child.kill(signal);
+    },
     ended,
     memory: async () => {
       const status = await readFile(`/proc/${child.pid}/status`, 'utf8');
