@@ -1,9 +1,7 @@
 import { DatabaseError } from 'sequelize';
-import { describe, expect, it, vi } from 'vitest';
+import { describe, expect, it } from 'vitest';
 import { NotFoundError, ThrottledError, UnauthenticatedError } from '@/lib/errors';
 import { problemOf } from '@/lib/http/problem';
-
-vi.mock('server-only', () => ({}));
 
 const request = { method: 'GET', path: '/api/v1/batches' };
 const refusedBy = (code: string) => new DatabaseError(Object.assign(new Error('x'), { code, sql: '' }));

@@ -11,9 +11,14 @@ vi.stubGlobal('document', { addEventListener: nothing });
 vi.stubGlobal('Path2D', function Path2D() {
   return { rect: nothing, moveTo: nothing, lineTo: nothing, arcTo: nothing, closePath: nothing };
 });
+// Another file of this process may have loaded it without a browser.
+vi.resetModules();
 const { default: Plot } = await import('uplot');
 const { GAS_BARS } = await import('@/components/charts/options');
-afterAll(() => vi.unstubAllGlobals());
+afterAll(() => {
+  vi.unstubAllGlobals();
+  vi.resetModules();
+});
 
 /** A plot of 100 px on 100 s, as far as the bars ask for one. */
 function drawn(data: uPlot.AlignedData): { left: number; width: number }[] {

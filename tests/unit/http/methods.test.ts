@@ -1,9 +1,7 @@
-import { describe, expect, it, vi } from 'vitest';
+import { describe, expect, it } from 'vitest';
 import { endpoints, type Endpoint } from '@/lib/contracts/endpoints';
 import { problem } from '@/lib/contracts/common';
 import { wrongMethod } from '@/lib/http/methods';
-
-vi.mock('server-only', () => ({}));
 
 const ID = '00000000-0000-4000-8000-000000000000';
 const addressOf = ({ path }: Endpoint) => `/api/v1${path.replace(/\{\w+\}/g, ID)}`;
