@@ -15,7 +15,8 @@ const config = [
   ...nextTypescript,
   {
     files: ['**/*.{ts,tsx}'],
-    languageOptions: { parserOptions: { projectService: true } },
+    // One program for all of it: the service that editors use opens each file anew.
+    languageOptions: { parserOptions: { project: './tsconfig.json', tsconfigRootDir: import.meta.dirname } },
     plugins: { '@typescript-eslint': tseslint.plugin },
     rules: {
       '@typescript-eslint/no-floating-promises': 'error',
