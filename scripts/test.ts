@@ -6,7 +6,7 @@ import { join, relative, resolve } from 'node:path';
 const ROOT = resolve(import.meta.dirname, '..');
 
 /** What needs neither a database nor a browser keeps one core busy each: two at a time, the longest first. */
-const BESIDE = [['evaluation'], ['unit', 'reference'], ['types'], ['lint']];
+const BESIDE = [['lint'], ['types'], ['unit', 'reference'], ['evaluation']];
 const AT_A_TIME = 2;
 
 /** The others, each in a run of its own: two cores and one database do not share well. */
