@@ -11,6 +11,7 @@ import { Sentence } from '@/components/ui/Sentence';
 import { ClientError } from '@/lib/client/fetcher';
 import { removeEntry, useRevisions } from '@/lib/client/entries';
 import { LOGGED_KINDS, type EntryBody } from '@/lib/contracts/batches';
+import { partOfWork } from '@/lib/contracts/work';
 import { LogIcon, LOG_KIND_WORDS } from './icons';
 import { How } from '@/components/ui/How';
 import { howOfEntry } from './entry-words';
@@ -119,7 +120,7 @@ function Row({ row, batchId, now, timeZone, onCorrect }: RowProps) {
             correct
           </button>
         )}
-        {row.mine && <TakeBack batchId={batchId} entryId={row.id} />}
+        {row.mine && !(entry && partOfWork(entry)) && <TakeBack batchId={batchId} entryId={row.id} />}
       </span>
       <span className="row-start-1 whitespace-nowrap text-right font-mono text-[0.84375rem] font-semibold max-strip:col-start-3 strip:col-start-5">{row.figure}</span>
       <span className="type-label truncate text-[0.71875rem] text-ink2 max-strip:hidden strip:col-start-6 strip:text-right" title={row.who}>

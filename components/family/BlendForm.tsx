@@ -9,8 +9,10 @@ import { Button } from '@/components/ui/Button';
 import { Choice } from '@/components/ui/Choice';
 import { Field, Select } from '@/components/ui/Field';
 import { How } from '@/components/ui/How';
+import { NotKeptYet } from '@/components/ui/NotKeptYet';
 import { FormError } from '@/components/ui/Notice';
 import { Sentence } from '@/components/ui/Sentence';
+import { useKept } from '@/components/ui/use-kept';
 import { useBatches } from '@/lib/client/batches';
 import { blendBatches } from '@/lib/client/cellarwork';
 import type { BatchBody } from '@/lib/contracts/batches';
@@ -22,17 +24,29 @@ import { useSend } from '@/lib/client/use-send';
 import { newVessel, showsVessel, vesselBody, VesselFields } from './VesselFields';
 
 /** Pours this batch together with others, into a new vessel or into one of them. What it comes to is told before anything is poured. */
-export function BlendForm({ batch, now, timeZone }: { batch: BatchBody; now: number; timeZone: string }) {
+export function BlendForm({ keptAs, batch, now, timeZone }: { keptAs: string; batch: BatchBody; now: number; timeZone: string }) {
   const { batches } = useBatches({ state: 'working' });
-  const [parts, setParts] = useState<BlendPartDraft[]>([{ key: 1, batchId: batch.id, litres: String(batch.volume_l) }, { key: 2, batchId: '', litres: '' }]);
+  const [draft, setDraft, found, forget] = useKept(keptAs, () => ({
+    parts: [{ key: 1, batchId: batch.id, litres: String(batch.volume_l) }, { key: 2, batchId: '', litres: '' }] as readonly BlendPartDraft[],
+    where: 'new' as 'new' | 'there',
+    intoId: '',
+    vessel: newVessel(`${batch.name}, blended`.slice(0, 80)),
+    at: '',
+    text: '',
+    clientId: crypto.randomUUID() as string,
+  }));
+  const { parts, where, intoId, vessel, at, text, clientId } = draft;
+  const set = (next: Partial<typeof draft>) => setDraft({ ...draft, ...next });
   const [drinks, setDrinks] = useState<Readonly<Record<string, DrinkBody>>>({});
-  const [where, setWhere] = useState<'new' | 'there'>('new');
-  const [intoId, setIntoId] = useState('');
-  const [vessel, setVessel] = useState(() => newVessel(`${batch.name}, blended`.slice(0, 80)));
-  const [at, setAt] = useState('');
-  const [text, setText] = useState('');
-  const [clientId] = useState(() => crypto.randomUUID());
-  const { errors, failed, sending, answer, submit } = useSend(blendForm, blendBatches, (path) => ['at', 'into_batch_id'].includes(path) || showsVessel(path, 'into') || /^parts\.\d+\./.test(path));
+  const { errors, failed, sending, answer, submit } = useSend(
+    blendForm,
+    async (form) => {
+      const done = await blendBatches(form);
+      forget();
+      return done;
+    },
+    (path) => ['at', 'into_batch_id'].includes(path) || showsVessel(path, 'into') || /^parts\.\d+\./.test(path),
+  );
 
   const preview = useMemo(() => {
     const contents = parts.map((part) => {
@@ -57,8 +71,13 @@ export function BlendForm({ batch, now, timeZone }: { batch: BatchBody; now: num
     );
   }
 
+  const asked = parts.flatMap((part) => {
+    const item = (batches ?? []).find(({ id }) => id === part.batchId);
+    const asks = typedNumber(part.litres);
+    return item && asks !== null && asks > item.volume_l + 1e-6 ? [{ name: item.name, asks, has: item.volume_l }] : [];
+  });
   const others = (batches ?? []).filter((item) => !parts.some((part) => part.batchId === item.id));
-  const change = (key: number, part: Partial<BlendPartDraft>) => setParts((before) => before.map((item) => (item.key === key ? { ...item, ...part } : item)));
+  const change = (key: number, part: Partial<BlendPartDraft>) => set({ parts: parts.map((item) => (item.key === key ? { ...item, ...part } : item)) });
   function send(event: FormEvent) {
     event.preventDefault();
     void submit({
@@ -73,6 +92,7 @@ export function BlendForm({ batch, now, timeZone }: { batch: BatchBody; now: num
 
   return (
     <form onSubmit={send} noValidate className="flex max-w-[600px] flex-col gap-4">
+      {found && <NotKeptYet />}
       <fieldset className="flex flex-col gap-3">
         <legend className="type-verdict mb-2">What goes in</legend>
         {parts.map((part, index) => (
@@ -83,11 +103,11 @@ export function BlendForm({ batch, now, timeZone }: { batch: BatchBody; now: num
             errors={{ batch: errors[`parts.${index}.batch_id`], litres: errors[`parts.${index}.volume_l`] }}
             onChange={(next) => change(part.key, next)}
             onDrink={(drink) => setDrinks((before) => (before[drink.batch_id] === drink ? before : { ...before, [drink.batch_id]: drink }))}
-            onRemove={parts.length > 1 ? () => setParts((before) => before.filter((item) => item.key !== part.key)) : null}
+            onRemove={parts.length > 1 ? () => set({ parts: parts.filter((item) => item.key !== part.key) }) : null}
           />
         ))}
         {others.length > 0 && parts.length < 12 && (
-          <Button className="self-start" onClick={() => setParts((before) => [...before, { key: Math.max(...before.map((item) => item.key)) + 1, batchId: '', litres: '' }])}>
+          <Button className="self-start" onClick={() => set({ parts: [...parts, { key: Math.max(...parts.map((item) => item.key)) + 1, batchId: '', litres: '' }] })}>
             Another batch
           </Button>
         )}
@@ -103,9 +123,14 @@ export function BlendForm({ batch, now, timeZone }: { batch: BatchBody; now: num
           <How how={preview.how} of="what it comes to" />
         </section>
       )}
-      <Choice label="Into" value={where} onChoose={setWhere} options={[{ value: 'new', name: 'a vessel of its own' }, { value: 'there', name: 'a batch that is there' }]} />
+      {asked.map(({ name, asks, has }) => (
+        <p key={name} role="status" className="type-body border-l-[3px] border-madder pl-3">
+          <Sentence>{`${litres(asks)} are asked of ${name}, which has ${litres(has)}.`}</Sentence>
+        </p>
+      ))}
+      <Choice label="Into" value={where} onChoose={(chosen) => set({ where: chosen })} options={[{ value: 'new', name: 'a vessel of its own' }, { value: 'there', name: 'a batch that is there' }]} />
       {where === 'there' ? (
-        <Select label="Which batch takes it" value={intoId} onChange={(event) => setIntoId(event.target.value)} error={errors.into_batch_id ?? errors.into}>
+        <Select label="Which batch takes it" value={intoId} onChange={(event) => set({ intoId: event.target.value })} error={errors.into_batch_id ?? errors.into}>
           <option value="">Choose</option>
           {others.map((item) => (
             <option key={item.id} value={item.id}>
@@ -115,12 +140,12 @@ export function BlendForm({ batch, now, timeZone }: { batch: BatchBody; now: num
         </Select>
       ) : (
         <div className="grid grid-cols-2 gap-3">
-          <VesselFields draft={vessel} errors={errors} prefix="into" onChange={setVessel} />
+          <VesselFields draft={vessel} errors={errors} prefix="into" onChange={(next) => set({ vessel: next })} />
         </div>
       )}
       <p className="type-reason text-ink2">Sugar of one and yeast of the other can begin again. Leave room, keep an airlock on it, and read it by hand before it goes near a bottle.</p>
-      <WhenField value={at} onType={setAt} now={now} timeZone={timeZone} error={errors.at} />
-      <Field label="Note" autoComplete="off" maxLength={2000} value={text} onChange={(event) => setText(event.target.value)} />
+      <WhenField value={at} onType={(typed) => set({ at: typed })} now={now} timeZone={timeZone} error={errors.at} />
+      <Field label="Note" autoComplete="off" maxLength={2000} value={text} onChange={(event) => set({ text: event.target.value })} />
       {failed && <FormError>{failed}</FormError>}
       <Button look="first" type="submit" className="self-end" disabled={sending}>
         {sending ? 'Saving' : 'Blended'}

@@ -40,7 +40,9 @@ export function BlendPart({ part, batches, errors, onChange, onDrink, onRemove }
         value={part.batchId}
         onChange={(event) => {
           const chosen = batches.find((item) => item.id === event.target.value);
-          onChange({ batchId: event.target.value, litres: part.litres || (chosen ? String(chosen.volume_l) : '') });
+          // All of another batch was not typed: it goes with that batch.
+          const untouched = part.litres === '' || part.litres === String(batches.find((item) => item.id === part.batchId)?.volume_l);
+          onChange({ batchId: event.target.value, litres: !untouched ? part.litres : chosen ? String(chosen.volume_l) : '' });
         }}
         error={errors.batch}
         hint={drink && (known ? `${litres(drink.volume_l)} at ${gravityText(drink.gravity!)}${drink.strength ? `, ${percent(drink.strength.balling.value.value)}` : ''}` : 'needs an original gravity and a reading first')}

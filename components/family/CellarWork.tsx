@@ -125,8 +125,8 @@ export function CellarWork({ batchId }: { batchId: string }) {
         {tab === 'rack' && <RackForm key={`rack ${work}`} keptAs={`rack ${work}`} batch={batch} rack now={now} timeZone={timeZone} />}
         {tab === 'top-up' && <RackForm key={`top-up ${work}`} keptAs={`top-up ${work}`} batch={batch} rack={false} now={now} timeZone={timeZone} />}
         {tab === 'fine' && <Finings batchId={batch.id} volumeL={batch.volume_l} now={now} timeZone={timeZone} mayDo={mayMove} />}
-        {tab === 'split' && <SplitForm batch={batch} now={now} timeZone={timeZone} />}
-        {tab === 'blend' && <BlendForm batch={batch} now={now} timeZone={timeZone} />}
+        {tab === 'split' && <SplitForm key={`split ${work}`} keptAs={`split ${work}`} batch={batch} now={now} timeZone={timeZone} />}
+        {tab === 'blend' && <BlendForm key={`blend ${work}`} keptAs={`blend ${work}`} batch={batch} now={now} timeZone={timeZone} />}
         {tab === 'family' && <Family batchId={batch.id} timeZone={timeZone} />}
         {MOVES.includes(tab) && (
           <aside aria-label="Family" className="max-wide:mt-8 max-wide:border-t-[1.5px] max-wide:border-ink max-wide:pt-4">

@@ -58,12 +58,11 @@ const fieldOf = (path: string): string => FIELD_OF[path] ?? (/top_up(\.\d+)?\.vo
 export function RackForm({ keptAs, batch, rack, now, timeZone }: { keptAs: string; batch: BatchBody; rack: boolean; now: number; timeZone: string }) {
   const { batches } = useBatches({ state: 'working' });
   const { drink } = useDrink(batch.id);
-  const [draft, setDraft, found, forget] = useKept(keptAs, () => ({ left: '', vessel: '', tag: '', place: '', neck: '', sulphite: '', what: (rack ? '' : 'water') as What, topUp: '', gravity: '', original: '', from: '', at: '', text: '' }));
+  const [draft, setDraft, found, forget] = useKept(keptAs, () => ({ left: '', vessel: '', tag: '', place: '', neck: '', sulphite: '', what: (rack ? '' : 'water') as What, topUp: '', gravity: '', original: '', from: '', at: '', text: '', clientId: crypto.randomUUID() as string }));
   const [errors, setErrors] = useState<Record<string, string>>({});
   const [failed, setFailed] = useState<string | null>(null);
   const [sending, setSending] = useState(false);
   const [moved, setMoved] = useState<MovedBody | null>(null);
-  const [clientId] = useState(() => crypto.randomUUID());
   const set = (field: keyof typeof draft) => (event: { target: { value: string } }) => setDraft({ ...draft, [field]: event.target.value });
 
   function tell(fields: Record<string, readonly string[]>) {
@@ -80,7 +79,7 @@ export function RackForm({ keptAs, batch, rack, now, timeZone }: { keptAs: strin
     const number = (text: string) => typedNumber(text);
     const words = (text: string) => (text.trim() === '' ? null : text.trim());
     const topUp = draft.what === '' ? null : { what: draft.what, volume_l: number(draft.topUp) ?? NaN, gravity: typedGravity(draft.gravity), original_gravity: typedGravity(draft.original), batch_id: words(draft.from) };
-    const base = { at: timeTyped(draft.at, timeZone), text: words(draft.text), client_id: clientId };
+    const base = { at: timeTyped(draft.at, timeZone), text: words(draft.text), client_id: draft.clientId };
     const vessel = {
       ...(draft.vessel.trim() === '' ? {} : { vessel_l: number(draft.vessel) ?? NaN }),
       ...(draft.tag.trim() === '' ? {} : { tag: number(draft.tag) }),

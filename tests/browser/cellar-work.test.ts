@@ -170,13 +170,29 @@ describe('what is done to a drink', () => {
     await page.getByLabel('How much goes in').fill('4');
     await page.getByLabel('It holds, brim full').fill('4.6');
     await page.getByText('6 L stays in Long hedge.').waitFor();
+    await page.reload();
+    await page.getByText('What you wrote here before is still on the page.').waitFor();
+    await page.getByText('6 L stays in Long hedge.').waitFor();
     await page.getByRole('button', { name: 'Split', exact: true }).last().click();
     await page.getByText('Done and logged.').waitFor();
+    // Another batch rests on it, so that the house would refuse to take it back.
+    await open(page, `/batches/${long.id}`);
+    const line = page.getByRole('region', { name: 'Log' }).getByRole('listitem').filter({ hasText: 'Split, 4 L went over.' });
+    await line.waitFor();
+    expect(await line.getByRole('button', { name: 'take back' }).count()).toBe(0);
 
     await open(page, `/batches/${long.id}/work?do=blend`);
-    await page.getByLabel('Batch', { exact: true }).nth(1).selectOption({ label: sharp.name });
+    const second = page.getByLabel('Batch', { exact: true }).nth(1);
+    await second.selectOption({ label: 'Long hedge, second vessel' });
+    expect(await page.getByLabel('How much').nth(1).inputValue()).toBe('4');
+    await second.selectOption({ label: sharp.name });
+    expect(await page.getByLabel('How much').nth(1).inputValue()).toBe(String(sharp.volumeL));
+    await page.getByLabel('How much').nth(0).fill('7');
+    await page.getByText('7 L are asked of Long hedge, which has 6 L.').waitFor();
     await page.getByLabel('How much').nth(0).fill('3');
     await page.getByLabel('How much').nth(1).fill('2');
+    await page.reload();
+    await page.getByText('What you wrote here before is still on the page.').waitFor();
     await page.getByLabel('It holds, brim full').fill('5.5');
     await page.getByRole('region', { name: 'What it comes to' }).waitFor();
     await page.getByRole('button', { name: 'Blended', exact: true }).click();

@@ -4,13 +4,13 @@ import { Entry } from '@/db/models';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
+import { partOfWork } from '@/lib/contracts/work';
 import { ConflictError, ForbiddenError, NotFoundError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { loadBatch } from '../batches/load';
 import { notifyChange } from '../changes';
 import { followOriginal, settleBatch } from './effects';
 import { mayRemove } from './present';
-import { partOfWork } from './work';
 
 /** Takes an entry back: the log no longer shows it, the past can still be explained by it, and the batch stands as without it. */
 export async function removeEntry(actor: Actor, batchId: string, entryId: string, clock: Clock = systemClock): Promise<void> {

@@ -5,6 +5,7 @@ import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
 import { checkEntry, LOGGED_KINDS, type EntryBody, type RevisionList, type UpdateEntry } from '@/lib/contracts/batches';
+import { partOfWork } from '@/lib/contracts/work';
 import { ConflictError, ForbiddenError, InvalidError, NotFoundError, type FieldErrors } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { loadBatch } from '../batches/load';
@@ -16,7 +17,6 @@ import { broughtBy } from './brought';
 import { followOriginal, settleBatch } from './effects';
 import { namesOf } from './names';
 import { mayRemove, presentEntry } from './present';
-import { partOfWork } from './work';
 
 export type Before = RevisionList['items'][number]['before'];
 
