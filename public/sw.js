@@ -183,6 +183,13 @@ async function fromParts(request) {
   return response;
 }
 
+/** What a page asks for that the shelf does not. @param {string} path */
+function answersOf(path) {
+  if (path === '/rounds') return ['/api/v1/jobs?state=open&order=walk&limit=200', '/api/v1/jobs?state=done&limit=50'];
+  const batch = /^\/batches\/([0-9a-f-]{36})$/.exec(path)?.[1];
+  return batch ? ['', '/entries?limit=200', '/judgement', '/series?points=400', '/assessments'].map((part) => `/api/v1/batches/${batch}${part}`) : [];
+}
+
 /** Pages that a person on the shelf may want next, with what they show. @param {readonly string[]} paths */
 async function fetchAhead(paths) {
   const pages = await caches.open(PAGES);
@@ -194,9 +201,7 @@ async function fetchAhead(paths) {
     const response = await fetch(path, { headers: { accept: 'text/html' } }).catch(() => null);
     if (!response) return;
     if (isPage(response, url)) await keepPage(path, response, asked);
-    const batch = /^\/batches\/([0-9a-f-]{36})$/.exec(path)?.[1];
-    if (!batch) continue;
-    for (const part of [`/api/v1/batches/${batch}`, `/api/v1/batches/${batch}/entries?limit=200`, `/api/v1/batches/${batch}/judgement`, `/api/v1/batches/${batch}/series?points=400`, `/api/v1/batches/${batch}/assessments`]) {
+    for (const part of answersOf(path)) {
       const key = keyOf(new URL(part, self.location.origin));
       const answer = await fetch(part, { headers: { accept: 'application/json' } }).catch(() => null);
       if (key && answer) await keepAnswer(key, answer, asked);

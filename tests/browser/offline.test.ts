@@ -147,6 +147,20 @@ describe('without a network', () => {
 });
 
 describe('on the rounds without a network', () => {
+  it('shows the jobs of rounds that were not opened before the network went', async () => {
+    await Job.create({ cellarId, kind: 'other', title: 'Turn the demijohn', source: 'person', dueAt: new Date(Date.now() - 3_600_000), createdBy: wren.personId });
+    const made = await visit();
+    const { page, context } = made;
+    await onTheShelf(made);
+    await until('the kept rounds', () => holds(page, '/rounds'), 30_000);
+    await context.setOffline(true);
+    await page.goto(`${web.url}/rounds`);
+    await page.getByRole('button', { name: 'Done: Turn the demijohn' }).waitFor();
+    await page.getByText(/Shown as of \d\d:\d\d/).waitFor();
+    await online(context);
+    await Job.destroy({ where: {} });
+  });
+
   it('ticks and what is put off are kept through a reload, can be taken back, and are sent once, as of when they were made', async () => {
     const job = (title: string) => Job.create({ cellarId, kind: 'other', title, source: 'person', dueAt: new Date(Date.now() - 3_600_000), createdBy: wren.personId });
     const [airlock, feed, lees] = [await job('Top up the airlock'), await job('Feed the mead'), await job('Look at the lees')];
