@@ -49,10 +49,18 @@ export function ImportFile() {
   const { busy, failed, fields, act } = useAct('The file was not read. Try again.');
   const input = useRef<HTMLInputElement>(null);
 
+  // Of two looks at a file the later one counts, whichever is answered first.
+  const looks = useRef(0);
+
   const look = (file: Looked['file'], chosen: Chosen | null, as = kind) =>
     act(async () => {
+      looks.current += 1;
+      const mine = looks.current;
+      // What is chosen stands at once: the next choice, made before the answer, goes beside it.
+      if (chosen) setLooked((before) => before && { file, preview: { ...before.preview, ...chosen } });
       // The server's schema checks the whole of it; the union is told apart by its kind.
-      setLooked({ file, preview: await lookAtFile(formOf(as, file, chosen) as Parameters<typeof lookAtFile>[0]) });
+      const preview = await lookAtFile(formOf(as, file, chosen) as Parameters<typeof lookAtFile>[0]);
+      if (mine === looks.current) setLooked({ file, preview });
     });
 
   async function choose(files: FileList | null) {
@@ -60,6 +68,7 @@ export function ImportFile() {
     if (!file) return;
     setDone(null);
     setLooked(null);
+    looks.current += 1;
     await act(async () => {
       const limit = kind === 'archive' ? ARCHIVE_LIMIT_BYTES : IMPORT_LIMIT_BYTES;
       if (file.size > limit) throw new ClientError(413, 'too-large', `${file.name} is larger than ${limit / 1e6} MB. ${kind === 'archive' ? 'Take it out batch by batch, or use a backup.' : 'Cut it in parts.'}`);
@@ -121,7 +130,14 @@ export function ImportFile() {
             <Button look="first" disabled={busy || looked.preview.good === 0 || (kind === 'readings' && batch === '')} onClick={() => void keep()}>
               Keep {countWords({ [kind === 'readings' ? 'readings' : 'batches']: looked.preview.good })}
             </Button>
-            <Button onClick={() => setLooked(null)}>Leave it</Button>
+            <Button
+              onClick={() => {
+                looks.current += 1;
+                setLooked(null);
+              }}
+            >
+              Leave it
+            </Button>
           </div>
         </>
       )}

@@ -57,6 +57,29 @@ describe('data in and out', () => {
     await page.getByText(/^Kept:/).waitFor({ state: 'hidden' });
   });
 
+  it('keeps a choice of column that was made before the answer to the one before it', async () => {
+    const visit = await settings('data');
+    const { page } = visit;
+    const day = new Date(Date.now() - 86_400_000).toISOString().slice(0, 10);
+    await page.getByLabel('file').setInputFiles({ name: 'log.csv', mimeType: 'text/csv', buffer: Buffer.from(`a;b;c\n${day} 06:00;18,5;1,049\n`) });
+    await page.getByText('0 lines understood, 1 not.').waitFor();
+    // A slow network, and the first answer later than the last.
+    let asked = 0;
+    await page.route('**/api/v1/imports/preview', async (route) => {
+      asked += 1;
+      await new Promise((resolve) => setTimeout(resolve, asked === 1 ? 3_000 : 800));
+      await route.continue();
+    });
+    await page.getByLabel('time', { exact: true }).selectOption('a');
+    await page.getByLabel('gravity', { exact: true }).selectOption('c');
+    await page.getByLabel('temperature', { exact: true }).selectOption('b');
+    await page.getByText('1 line understood.').waitFor();
+    await new Promise((resolve) => setTimeout(resolve, 3_500));
+    expect(await page.getByText('1 line understood.').count()).toBe(1);
+    expect(await page.getByLabel('gravity', { exact: true }).inputValue()).toBe('2');
+    await page.context().close();
+  });
+
   it('says what is wrong with a file that is none, and keeps nothing', async () => {
     const visit = await settings('data', { phone: true, night: true });
     const { page } = visit;
