@@ -60,6 +60,8 @@ function curveLines(watch: Watch): string[] {
   lines.push(`Intervals: ${fixed(100 * done, 0)} % done (bin ${progressBin(done)}), final gravity ± ${fixed(half80, 1)} (80 %), ± ${fixed(half95, 1)} (95 %) points; ${fixed(watch.hoursToEnd(), 0)} h to the end`);
   const tail = watch.tail();
   if (tail) lines.push(`Tail: ${fixed(tail.remaining)} ± ${fixed(tail.sd)} points to come, likely ${fixed(tail.likely)}, slowing by ${fixed(tail.pace)} a day`);
+  const long = tail && watch.longTail();
+  if (long) lines.push(`Longer tail, whose pace wanes: ${fixed(long.remaining)} ± ${fixed(long.sd)} points to come`);
   const left = watch.remainingNow();
   if (left) lines.push(`Still to come, all told: ${fixed(left.value)} ± ${fixed(left.sd)} points`);
   return lines;

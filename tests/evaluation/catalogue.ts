@@ -1,5 +1,5 @@
 import type { BatchEvent, BatchSetup, DrinkKind, Reading } from '@/lib/core/types';
-import { ferment, pointsFrom, type Must, type Truth, type TruthEvent, type Yeast } from './ferment';
+import { ferment, pointsFrom, type Ferment, type Must, type Truth, type TruthEvent, type Yeast } from './ferment';
 import { mistell } from './mistold';
 import { Random } from './random';
 import { sense, usualSensor, type SensorFaults } from './sensor';
@@ -112,6 +112,7 @@ function hourUnder(truth: Truth, points: number, from = 0): number | null {
 
 /** Everything that a group may bend before the batch is simulated. */
 interface Draft {
+  simulate: Ferment;
   kind: DrinkKind;
   yeast: Yeast;
   must: Must;
@@ -127,13 +128,15 @@ interface Draft {
   endH: number | null;
 }
 
-export function makeCase(group: string, index: number, seed: number): Case {
+/** `simulate` is the make of ferment it is simulated by. */
+export function makeCase(group: string, index: number, seed: number, simulate: Ferment = ferment): Case {
   const r = new Random(seed, `${group} ${index}`);
   const kind = kindFor(group, r);
   const baseC = kind === 'beer' ? r.between(17.5, 21) : r.between(16.5, 22.5);
   const yeast = yeastOf(kind, r);
   const must = mustOf(kind, r);
   const draft: Draft = {
+    simulate,
     kind,
     yeast,
     must,
@@ -152,7 +155,7 @@ export function makeCase(group: string, index: number, seed: number): Case {
   const heatLossH = 4 + 0.6 * volumeL;
   bend(group, draft, r, volumeL, heatLossH);
 
-  const truth = ferment(draft.yeast, draft.must, LONG_H, draft.ambient, heatLossH, draft.truthEvents);
+  const truth = simulate(draft.yeast, draft.must, LONG_H, draft.ambient, heatLossH, draft.truthEvents);
   const finals = finalsOf(draft, heatLossH, truth);
   const og = truth.gravity[0]!;
   const endH = Math.min(75 * 24, draft.endH ?? lastOf(truth, finals, r));
@@ -205,7 +208,7 @@ function kindFor(group: string, r: Random): DrinkKind {
 
 /** The draft's own ferment as it stands, to find when things happen in it. */
 function rehearse(draft: Draft, heatLossH: number, hours = 24 * 60): Truth {
-  return ferment(draft.yeast, draft.must, hours, draft.ambient, heatLossH, draft.truthEvents);
+  return draft.simulate(draft.yeast, draft.must, hours, draft.ambient, heatLossH, draft.truthEvents);
 }
 
 function hourAtShare(truth: Truth, share: number): number {
@@ -359,7 +362,7 @@ function finalsOf(d: Draft, heatLossH: number, truth: Truth): { from: number; po
       return { from, points: stalls ? dry : finalOf(truth) };
     }
     const events = killed ? [] : d.truthEvents.filter((event) => event.hour <= from && (event.hour > 0 || k > 0));
-    return { from, points: finalOf(ferment(source.yeast, source.must, LONG_H, source.ambient, heatLossH, events)) };
+    return { from, points: finalOf(d.simulate(source.yeast, source.must, LONG_H, source.ambient, heatLossH, events)) };
   });
 }
 
@@ -393,6 +396,6 @@ function told(d: Draft, truth: Truth, og: number, volumeL: number, vesselL: numb
   };
 }
 
-export function* catalogue(seed: number, groups: readonly (readonly [string, number])[]): Generator<Case> {
-  for (const [group, count] of groups) for (let i = 0; i < count; i += 1) yield makeCase(group, i, seed);
+export function* catalogue(seed: number, groups: readonly (readonly [string, number])[], simulate: Ferment = ferment): Generator<Case> {
+  for (const [group, count] of groups) for (let i = 0; i < count; i += 1) yield makeCase(group, i, seed, simulate);
 }

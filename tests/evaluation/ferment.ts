@@ -75,8 +75,19 @@ export function cardinal(t: number, coldest: number, best: number, hottest: numb
   return Math.max(0, top / bottom);
 }
 
-const STEP = 0.1;
-const KEEP_EVERY = 5;
+/** A make of ferment: the truth from the pitch for so many hours. */
+export type Ferment = typeof ferment;
+
+/** h of one step of the integration; every so many of them one is kept. */
+export const STEP = 0.1;
+export const KEEP_EVERY = 5;
+
+/** Room for the samples of so many hours. */
+export function newTruth(hours: number): Truth {
+  const step = STEP * KEEP_EVERY;
+  const samples = (): Float64Array => new Float64Array(Math.floor(hours / step) + 1);
+  return { step, gravity: samples(), temperature: samples(), rate: samples(), ethanol: samples() };
+}
 
 /** Gravity points of a liquid with so much extract and ethanol, g/L. */
 export function pointsFrom(extract: number, ethanol: number): number {
@@ -93,14 +104,7 @@ export function ferment(
   events: readonly TruthEvent[] = [],
   startC = ambient(0),
 ): Truth {
-  const samples = Math.floor(hours / (STEP * KEEP_EVERY)) + 1;
-  const truth: Truth = {
-    step: STEP * KEEP_EVERY,
-    gravity: new Float64Array(samples),
-    temperature: new Float64Array(samples),
-    rate: new Float64Array(samples),
-    ethanol: new Float64Array(samples),
-  };
+  const truth = newTruth(hours);
   let [s1, s2, s3] = must.sugars;
   let { cells, nitrogen } = must;
   let rest = must.rest;
@@ -114,7 +118,7 @@ export function ferment(
   const queue = [...events].sort((a, b) => a.hour - b.hour);
   const at20 = cardinal(20, yeast.coldest, yeast.best, yeast.hottest) || 1;
 
-  for (let i = 0; i <= (samples - 1) * KEEP_EVERY; i += 1) {
+  for (let i = 0; i <= (truth.gravity.length - 1) * KEEP_EVERY; i += 1) {
     const hour = i * STEP;
     while (queue.length > 0 && queue[0]!.hour <= hour) {
       const event = queue.shift()!;

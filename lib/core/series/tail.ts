@@ -28,6 +28,9 @@ export function usualPace(ageDays: number): number {
   return Math.max(slow, Math.min(quick, (quick * untilDay) / ageDays));
 }
 
+/** Share of its age over which a waning tail is followed back; before that it falls at the pace it had there. */
+const WANES_FROM = 0.35;
+
 let size = 256;
 let weights = new Float64Array(size);
 let residuals = new Float64Array(size);
@@ -76,9 +79,11 @@ function solve(g: Float64Array, from: number, n: number): Line2 | null {
  * Falling end of a ferment as a + b·e^(−λt) over t[from..to) (h, ascending), `now` in
  * h, the age in days. The pace λ is averaged over a prior that goes with the age:
  * what took long to get here slows down slowly. b at `now` is what is still to
- * come. Null with fewer than ten points.
+ * come. Where the tail `wanes`, the pace is that of now and wanes as the age grows: a
+ * power of the age in place of the exponential, which leaves more to come. Null with
+ * fewer than ten points.
  */
-export function fitTail(t: Float64Array, g: Float64Array, from: number, to: number, now: number, ageDays: number): Tail | null {
+export function fitTail(t: Float64Array, g: Float64Array, from: number, to: number, now: number, ageDays: number, wanes = false): Tail | null {
   const n = to - from;
   if (n < 10 || !(ageDays > 0)) return null;
   if (n > size) {
@@ -96,7 +101,7 @@ export function fitTail(t: Float64Array, g: Float64Array, from: number, to: numb
   let rho = 0;
   // Weights against bubbles from the middle pace; the shape matters little for them.
   for (let round = 0; round < 3; round += 1) {
-    setBasis(t, from, n, now, median / ageDays, basis);
+    setBasis(t, from, n, now, median / ageDays, wanes ? ageDays : null, basis);
     const fit = solve(g, from, n);
     if (!fit) return null;
     for (let i = 0; i < n; i += 1) {
@@ -132,7 +137,7 @@ export function fitTail(t: Float64Array, g: Float64Array, from: number, to: numb
     const multiple = PACES[k]!;
     const lambda = multiple / ageDays;
     const kept = k % 2 === 0 ? even : odd;
-    if (k < 2) setBasis(t, from, n, now, lambda, kept);
+    if (k < 2) setBasis(t, from, n, now, lambda, wanes ? ageDays : null, kept);
     else for (let i = 0; i < n; i += 1) kept[i] = Math.min(1e120, kept[i]! * kept[i]!);
     basis.set(kept.subarray(0, n));
     const fit = solve(g, from, n);
@@ -155,6 +160,16 @@ export function fitTail(t: Float64Array, g: Float64Array, from: number, to: numb
   return { remaining: mean, sd: Math.sqrt(Math.max(0, second / total - mean * mean)), likely: Math.exp(logs / total), pace: pace / total };
 }
 
-function setBasis(t: Float64Array, from: number, n: number, now: number, lambda: number, out: Float64Array): void {
-  for (let i = 0; i < n; i += 1) out[i] = Math.exp(Math.min(STEEPEST, (lambda * (now - t[from + i]!)) / 24));
+/** The basis of a pace: of a steady one, or of one that wanes with `waningAge`, days. */
+function setBasis(t: Float64Array, from: number, n: number, now: number, lambda: number, waningAge: number | null, out: Float64Array): void {
+  for (let i = 0; i < n; i += 1) {
+    const back = (now - t[from + i]!) / 24;
+    out[i] = Math.exp(Math.min(STEEPEST, lambda * (waningAge === null ? back : waned(back, waningAge))));
+  }
+}
+
+/** Days at the present pace in which so much falls as in so many days back, when the pace goes with one over the age. */
+function waned(back: number, age: number): number {
+  const near = Math.min(back, WANES_FROM * age);
+  return -age * Math.log(1 - near / age) + (back - near) / (1 - WANES_FROM);
 }

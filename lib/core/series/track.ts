@@ -155,11 +155,11 @@ export class Track extends Pinned {
    * on both sides of it tells more of an end than either. Null when most of the wanted
    * hours are missing.
    */
-  tail(hours: number, notBefore: number, to: number, ageH: number): Tail | null {
+  tail(hours: number, notBefore: number, to: number, ageH: number, wanes: boolean): Tail | null {
     const from = Math.max(notBefore, this.reachOf(hours, to));
     if (to - from < 66) return null;
     const kept = this.gather(from, to, Math.min(0.75, (0.75 * hours) / (to - from)));
-    return kept < 10 ? null : fitTail(lineT, lineG, 0, kept > 60 ? thirds(kept) : kept, to, ageH / 24);
+    return kept < 10 ? null : fitTail(lineT, lineG, 0, kept > 60 ? thirds(kept) : kept, to, ageH / 24, wanes);
   }
 
   /** The hour since which there are so many hours of sound record before `to`; at most two and a half times as far back. */

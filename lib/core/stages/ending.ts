@@ -2,10 +2,13 @@ import { VOLUMES_PER_POINT } from '../gas/gas';
 import type { Line } from '../series/line';
 import { hold, never } from './latch';
 import { CURVE_PAST_DAYS, Peak } from './peak';
+import type { Remaining } from './remaining';
 
 /** Points that may still come, nine times in ten, when a batch may be racked and when it is called finished. */
 export const RACK_POINTS = 4.4;
 const TERMINAL_POINTS = 1.9;
+/** The same by the longer end of the record, whose pace wanes. */
+const TERMINAL_LONG_POINTS = 2.8;
 /** The same where the end of the record says so by itself, while a curve that goes too deep still holds back (ours). */
 export const RACK_TAIL_POINTS = 3;
 /** Points left by the curve alone, at half its pace, when a batch may be racked whose float gives nothing, and when it is taken to have ended (ours). */
@@ -45,7 +48,7 @@ export class Ending extends Peak {
 
     const sugary = level !== null && this.sweetStill(level);
     const wasDone = this.terminal.on;
-    hold(this.terminal, hour, () => slow && upper48 < TERMINAL_PACE && !sugary && this.quietSinceAddition(60, 120) && this.leavesLess(TERMINAL_POINTS), 1, () => (lower48 !== null && lower48 > 0.8) || this.refermenting.on);
+    hold(this.terminal, hour, () => slow && upper48 < TERMINAL_PACE && !sugary && this.quietSinceAddition(60, 120) && this.leavesLess(TERMINAL_POINTS) && this.longLeavesLess(TERMINAL_LONG_POINTS), 1, () => (lower48 !== null && lower48 > 0.8) || this.refermenting.on);
     if (this.terminal.on && !wasDone) this.plateau = level;
 
     if (this.terminal.on) hold(this.rack, hour, () => true, 2, never);
@@ -86,9 +89,19 @@ export class Ending extends Peak {
 
   /** Little is left by the shorter end of the record, which sees a late fall, and by the longer, which is seldom deceived. */
   private bothEndsSaySo(): boolean {
+    return this.isLittleForBottles(this.longRemaining());
+  }
+
+  private longLeavesLess(points: number): boolean {
+    const left = this.longRemaining();
+    return left !== null && left.most < points;
+  }
+
+  /** What is still to come by the longer end of the record. */
+  private longRemaining(): Remaining | null {
     const level = this.levelNow();
     const long = this.tail() && this.longTail();
-    return level !== null && long !== null && this.isLittleForBottles(this.againstRange(level, long));
+    return level === null || long === null ? null : this.againstRange(level, long);
   }
 
   /** The float is stuck or silent. */

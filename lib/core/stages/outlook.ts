@@ -34,24 +34,24 @@ export class Outlook extends Figures {
 
   /** What is still to come by the end of the record alone: three tenths of the age, at least 4 and at most 12 days of it. */
   tail(): Tail | null {
-    this.tailCache = this.tailOver(0.3, 288, this.tailCache);
+    this.tailCache = this.tailOver(0.3, 288, false, this.tailCache);
     return this.tailCache.tail;
   }
 
-  /** The same from a longer end, 0.35 of the age and at most 14 days: slower to see an end, and seldom deceived by one. */
-  protected longTail(): Tail | null {
-    this.longTailCache = this.tailOver(0.35, 336, this.longTailCache);
+  /** The same from a longer end, 0.35 of the age and at most 14 days, with a pace that wanes: slower to see an end, and seldom deceived by one. */
+  longTail(): Tail | null {
+    this.longTailCache = this.tailOver(0.35, 336, true, this.longTailCache);
     return this.longTailCache.tail;
   }
 
-  private tailOver(share: number, mostH: number, cache: TailCache | null): TailCache {
+  private tailOver(share: number, mostH: number, wanes: boolean, cache: TailCache | null): TailCache {
     const now = Math.floor(this.lookedAt / TAIL_H + 1e-9) * TAIL_H;
     if (cache?.at === now) return cache;
     const { from, restarted } = this.segment;
     const own = restarted ? Math.max(72, now - from) : now;
     // A yeast that was fed at work is as tired as the whole batch is old, and its sugar as young as the feed; one that had come to rest begins anew.
     const age = restarted && !this.sweetened ? Math.sqrt(own * now) : own;
-    return { at: now, tail: this.track.tail(Math.max(96, Math.min(mostH, share * own)), restarted ? from + 24 : 0, now, age) };
+    return { at: now, tail: this.track.tail(Math.max(96, Math.min(mostH, share * own)), restarted ? from + 24 : 0, now, age, wanes) };
   }
 
   /** The alcohol at a level as a share of what the yeast bears; null where that is not told. */

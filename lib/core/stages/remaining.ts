@@ -1,8 +1,8 @@
 import { VOLUMES_PER_POINT } from '../gas/gas';
 
 /** Points that may still come, seven times in ten, when a batch may be bottled that rests no higher than where its yeast ends, and of one two spreads above that (ours). */
-export const BOTTLE_MOST = 0.95;
-export const BOTTLE_LEAST = 0.66;
+export const BOTTLE_MOST = 0.9;
+export const BOTTLE_LEAST = 0.62;
 const HIGH_SPREADS = 2;
 /** Points above where its yeast ends from which what rests may have stalled, and by how much more than that may come nine times in ten there (ours). */
 export const STALL_POINTS = 3;

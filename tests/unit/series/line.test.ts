@@ -93,6 +93,17 @@ describe('the tail', () => {
     expect(left[1]).toBeLessThan(left[2]!);
   });
 
+  it('knows what is still to come of an end whose pace wanes, where a steady pace promises too little', () => {
+    const ageDays = 30;
+    const random = new Random(11, 'waning');
+    const t = Float64Array.from({ length: 240 }, (_, i) => ageDays * 24 - 240 + i);
+    const g = t.map((hour) => 5 + 3 * (hour / (ageDays * 24)) ** -4 + random.normal(0, 0.3));
+    const steady = fitTail(t, g, 0, 240, ageDays * 24, ageDays)!;
+    const waning = fitTail(t, g, 0, 240, ageDays * 24, ageDays, true)!;
+    expect(Math.abs(waning.remaining - 3)).toBeLessThan(1.28 * waning.sd);
+    expect(steady.remaining).toBeLessThan(waning.remaining - 0.3);
+  });
+
   it('does not promise an end to a straight fall', () => {
     const random = new Random(9, 'straight');
     const t = Float64Array.from({ length: 168 }, (_, i) => 800 + i);
