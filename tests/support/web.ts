@@ -6,7 +6,7 @@ import { encode } from 'next-auth/jwt';
 import { SignIn } from '@/db/models';
 import { buildWeb } from '@/scripts/lib/build';
 import { freePort } from '@/scripts/lib/postgres';
-import { freeLock, takeLock } from './folder-lock';
+import { takeLock } from './process-lock';
 import { until } from './processes';
 
 const ROOT = resolve(import.meta.dirname, '../..');
@@ -31,13 +31,12 @@ export interface Web {
 async function built(): Promise<string> {
   const given = process.env.TEST_WEB_DIST;
   if (given) return given;
-  const lock = join(ROOT, `${DIST}.lock`);
   // Two suites at once: the second waits for the first one's build, unless that one was ended in the midst of it.
-  await until('the other suite’s web build', () => takeLock(lock), BUILD_PATIENCE_MS);
+  const lock = await until('the other suite’s web build', () => takeLock(join(ROOT, DIST)), BUILD_PATIENCE_MS);
   try {
     await buildWeb(ROOT, DIST);
   } finally {
-    await freeLock(lock);
+    await lock.free();
   }
   return DIST;
 }
