@@ -10,6 +10,7 @@ import { DRINK_COLOURS, VESSEL_KINDS } from '@/lib/contracts/batches';
 import { DRINK_KINDS, NECKS } from '@/lib/core/types';
 import { withKind, type BatchDraft, type BatchErrors } from './batch-form';
 import { roomNote, type RoomPromise } from './room';
+import { TagField } from './TagField';
 import { KIND_WORDS, NECK_WORDS } from './words';
 
 interface BatchFieldsProps {
@@ -22,6 +23,8 @@ interface BatchFieldsProps {
   fresh: boolean;
   /** What its must sheet says of the vessel it proposes. */
   promise?: RoomPromise | undefined;
+  /** The batch whose set-up it is. */
+  batchId?: string;
   /** More fields beside the yeast's: the sensor. */
   children?: ReactNode;
 }
@@ -58,7 +61,7 @@ function Colours({ value, onChoose }: { value: string; onChoose: (colour: string
 }
 
 /** The fields that starting a batch and changing its set-up share. */
-export function BatchFields({ draft, errors, onChange, latest, fresh, promise, children }: BatchFieldsProps) {
+export function BatchFields({ draft, errors, onChange, latest, fresh, promise, batchId, children }: BatchFieldsProps) {
   const set = (field: keyof BatchDraft) => (event: { target: { value: string } }) => onChange({ ...draft, [field]: event.target.value });
   const text = (field: keyof BatchDraft) => ({ value: draft[field], onChange: set(field), error: errors[field], autoComplete: 'off' });
   const figure = (field: keyof BatchDraft) => ({ ...text(field), inputMode: 'decimal' as const });
@@ -91,7 +94,7 @@ export function BatchFields({ draft, errors, onChange, latest, fresh, promise, c
           </p>
         )}
         {draft.neck === 'bung' && <p className="type-reason col-span-2 border-l-[3px] border-madder pl-3">Never stop a vessel that works: the pressure can break the glass.</p>}
-        <Field label="Number on its tag" {...figure('tag')} inputMode="numeric" />
+        <TagField label="Number on its tag" batchId={batchId} {...text('tag')} />
         <Field label="Where it stands" maxLength={80} {...text('place')} />
       </Group>
       <Group title="The start">

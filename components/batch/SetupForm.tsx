@@ -52,7 +52,7 @@ export function SetupForm({ batch, now, timeZone, onDone }: SetupFormProps) {
 
   return (
     <form onSubmit={submit} noValidate className="flex flex-col gap-5">
-      <BatchFields draft={draft} errors={errors} onChange={setDraft} latest={toLocal(now, timeZone)} fresh={false} />
+      <BatchFields draft={draft} errors={errors} onChange={setDraft} latest={toLocal(now, timeZone)} fresh={false} batchId={batch.id} />
       {failed && <FormError>{failed}</FormError>}
       <div className="flex justify-end">
         <Button type="submit" look="first" disabled={sending}>

@@ -4,6 +4,7 @@ import { useState, type FormEvent } from 'react';
 import { NotKeptYet } from '@/components/ui/NotKeptYet';
 import { useKept } from '@/components/ui/use-kept';
 import { timeTyped } from '@/components/batch/entry-form';
+import { TagField } from '@/components/batch/TagField';
 import { WhenField } from '@/components/batch/WhenField';
 import { litres, points, typedGravity, typedNumber } from '@/components/batch/figures';
 import { NECK_WORDS } from '@/components/batch/words';
@@ -125,7 +126,7 @@ export function RackForm({ keptAs, batch, rack, now, timeZone }: { keptAs: strin
             <fieldset className="grid grid-cols-2 gap-3">
               <legend className="type-verdict mb-2">Into another vessel, where it changed</legend>
               <UnitField measure="volume" label={`It holds (was ${litres(batch.vessel_l)})`} {...given('vessel')} />
-              {field('tag', `Tag (was ${batch.tag ?? 'none'})`)}
+              <TagField label={`Tag (was ${batch.tag ?? 'none'})`} batchId={batch.id} {...given('tag')} />
               {field('place', 'Place')}
               <Select label="The neck now" value={draft.neck} onChange={set('neck')}>
                 <option value="">as it was</option>

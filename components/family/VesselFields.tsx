@@ -1,3 +1,4 @@
+import { TagField } from '@/components/batch/TagField';
 import { NECK_WORDS } from '@/components/batch/words';
 import { typedNumber } from '@/components/batch/figures';
 import { Field, Select } from '@/components/ui/Field';
@@ -51,7 +52,7 @@ export function VesselFields({ draft, errors, prefix, onChange }: { draft: Vesse
           </option>
         ))}
       </Select>
-      <Field label="Tag" inputMode="numeric" autoComplete="off" value={draft.tag} onChange={set('tag')} error={at('tag')} />
+      <TagField label="Tag" value={draft.tag} onChange={set('tag')} error={at('tag')} />
       <Field className="col-span-full" label="Place" autoComplete="off" maxLength={80} value={draft.place} onChange={set('place')} error={at('place')} />
       {draft.neck === 'bung' && <p className="type-reason col-span-full border-l-[3px] border-madder pl-3">Never stop a vessel that works: the pressure can break the glass.</p>}
     </>

@@ -164,9 +164,13 @@ describe('what is done to a drink', () => {
   });
 
   it('splits into two vessels, is blended with another, and its family shows both', async () => {
-    const [long, sharp] = [await ciderAt(brewer, { volumeL: 10, vesselL: 11, batch: { name: 'Long hedge' } }), await ciderAt(brewer, { batch: { name: 'Sharp crab' } })];
+    const [long, sharp] = [await ciderAt(brewer, { volumeL: 10, vesselL: 11, batch: { name: 'Long hedge' } }), await ciderAt(brewer, { batch: { name: 'Sharp crab', tag: 31 } })];
     const { page, context, complaints } = await visit();
     await open(page, `/batches/${long.id}/work?do=split`);
+    await page.getByLabel('Tag', { exact: true }).fill('31');
+    await page.getByText('Tag 31 is on Sharp crab too.').waitFor();
+    await page.getByLabel('Tag', { exact: true }).fill('32');
+    await expect.poll(() => page.getByText('is on Sharp crab too').count()).toBe(0);
     await page.getByLabel('How much goes in').fill('4');
     await page.getByLabel('It holds, brim full').fill('4.6');
     await page.getByText('6 L stays in Long hedge.').waitFor();

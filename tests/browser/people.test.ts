@@ -139,6 +139,8 @@ describe('taken out of one of two cellars', () => {
     await removeMember(boss, person.id);
     await page.getByText('You are no longer in Chalk cave. This is Hay store.').waitFor();
     await page.waitForURL(/\/shelf$/);
+    // The new page's title comes with it, after its address.
+    await settled(page);
     await expectAccessible(page);
     await expectNoSidewaysScroll(page);
     await page.getByRole('button', { name: 'I have read it' }).click();
