@@ -33,7 +33,7 @@ function Facts({ batch, facts, phone }: { batch: BatchBody; facts: readonly Fact
         <div key={fact.name} className={phone ? `border-rule py-2 ${index > 3 ? 'border-t' : ''} ${index % 4 === 0 ? 'pl-(--margin)' : 'border-l pl-2'}` : `flex-auto py-2 pr-3 ${index === 0 ? '' : index % 4 === 0 ? 'wide:border-l wide:pl-3' : 'border-l pl-3'}`}>
           <dt className="type-label truncate text-[0.71875rem] text-ink2">{names[fact.name] ?? fact.name}</dt>
           {/* Words are longer than figures and would touch their neighbour. */}
-          <dd className={`font-mono font-semibold leading-5 ${phone && !/\d/.test(fact.figure) ? 'text-[0.8125rem]' : 'whitespace-nowrap text-[0.96875rem]'}`}>
+          <dd className={`font-mono font-semibold leading-5 ${phone && !/\d/.test(fact.figure) ? 'text-[0.8125rem]' : 'flex flex-wrap items-baseline gap-x-1.5 whitespace-nowrap text-[0.96875rem]'}`}>
             {fact.arriving ? (
               <Haze height={20} label={`Loading: ${names[fact.name] ?? fact.name}`} className="w-14" />
             ) : (
@@ -42,7 +42,7 @@ function Facts({ batch, facts, phone }: { batch: BatchBody; facts: readonly Fact
                 {fact.figure}
               </span>
             )}
-            {fact.more && !phone && <span className="type-label pl-1.5 text-ink2">{fact.more}</span>}
+            {fact.more && !phone && <span className="type-label text-ink2">{fact.more}</span>}
           </dd>
         </div>
       ))}

@@ -113,7 +113,7 @@ function Row({ row, batchId, now, timeZone, onCorrect }: RowProps) {
         {entry && <Photos adding={false} place={{ batch: batchId }} on={{ entry: entry.id }} />}
         {entry && before && <Corrections entry={entry} now={now} timeZone={timeZone} />}
       </div>
-      <span className="flex flex-wrap items-center justify-end gap-x-3 justify-self-end max-strip:col-span-2 max-strip:col-start-2 max-strip:row-start-3 max-strip:gap-x-5 strip:col-start-4">
+      <span className="not-printed flex flex-wrap items-center justify-end gap-x-3 justify-self-end max-strip:col-span-2 max-strip:col-start-2 max-strip:row-start-3 max-strip:gap-x-5 strip:col-start-4">
         {entry && <AddPhoto place={{ batch: batchId }} on={{ entry: entry.id }} />}
         {row.mine && entry && isLogged(entry.kind) && (
           <button type="button" className={SMALL} onClick={() => onCorrect(entry)}>

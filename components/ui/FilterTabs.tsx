@@ -10,7 +10,7 @@ interface FilterTabsProps<T extends string> {
 /** `Open 3 · In hand 2 · Cleared 41`: shows one part of a list. */
 export function FilterTabs<T extends string>({ label, value, onChoose, tabs }: FilterTabsProps<T>) {
   return (
-    <div role="group" aria-label={label} className="flex flex-wrap gap-2">
+    <div role="group" aria-label={label} className="not-printed flex flex-wrap gap-2">
       {tabs.map((tab) => (
         <button
           key={tab.value}
