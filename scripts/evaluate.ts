@@ -65,7 +65,7 @@ if (seed !== null && (values.seed!.trim() === '' || !Number.isInteger(seed))) wr
 const asked = values.equations;
 if (asked !== undefined && !isMake(asked)) wrong(`--equations "${asked}": first or second is wanted. ${USE}`);
 // A seed asked for without its make is one of the first.
-const makes: readonly Make[] = asked !== undefined ? [asked as Make] : seed !== null ? ['first'] : ['first', 'second'];
+const makes: readonly Make[] = asked !== undefined ? [asked] : seed !== null ? ['first'] : ['first', 'second'];
 
 const print = (text: string): void => void process.stdout.write(`${text}\n`);
 const summaryOf = ({ ours, naive }: Result, mistold: Result) => ({ ours: summarise(ours), naive: summarise(naive), mistold: summarise(mistold.ours) });

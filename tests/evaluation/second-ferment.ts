@@ -1,7 +1,9 @@
 /**
- * A second truth, which shares no equation with the first but the gravity of a liquid:
- * the thresholds were chosen on the first, so what this one shows is what is left of
- * them on ferments of another make. The papers are named from memory.
+ * A second truth, which shares with the first only the gravity of a liquid, what sugar
+ * yields and the heat: nearly all thresholds were chosen on the first, so what this one
+ * shows is what is left of them on ferments of another make. Its own tuning seeds were
+ * looked at for the pace that wanes and for what may come in bottles. The papers are
+ * named from memory.
  *
  * Nitrogen goes into the cells first and growth lives on that store (M. R. Droop,
  * J. Mar. Biol. Assoc. UK 48 (1968) 689–733). Sugars are taken up beside each other,
