@@ -9,7 +9,7 @@ import { ClientError } from '@/lib/client/fetcher';
 import type { EntryBody } from '@/lib/contracts/batches';
 import { correctionOf, draftOfEntry, emptyDraft, entryOf, errorsOf, toLocal, type DraftErrors, type EntryDraft, type EntryKind } from './entry-form';
 import { EntryFields } from './EntryFields';
-import { focusFirstError } from './focus';
+import { focusFirstError } from '@/lib/client/focus';
 import type { MustKnown } from './refractometer';
 
 const KINDS: { kind: EntryKind; name: string; alters: boolean }[] = [

@@ -20,7 +20,7 @@ import { BatchFields } from './BatchFields';
 import { batchErrors, batchToCreate, draftOfProposal, newDraft, type BatchDraft, type BatchErrors } from './batch-form';
 import { toLocal } from './entry-form';
 import { typedNumber } from './figures';
-import { focusFirstError } from './focus';
+import { focusFirstError } from '@/lib/client/focus';
 
 /** `must`: the sheet it is made from, in the version given. */
 export function NewBatchPage({ must = null, version, gravity = '' }: { must?: string | null; version?: number | undefined; /** As measured at the sheet, SG. */ gravity?: string }) {

@@ -9,7 +9,7 @@ import type { BatchBody, UpdateBatch } from '@/lib/contracts/batches';
 import { BatchFields } from './BatchFields';
 import { batchErrors, batchToUpdate, draftOf, type BatchErrors } from './batch-form';
 import { toLocal } from './entry-form';
-import { focusFirstError } from './focus';
+import { focusFirstError } from '@/lib/client/focus';
 
 interface SetupFormProps {
   batch: BatchBody;

@@ -2,7 +2,7 @@
 
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
-import { focusFirstError } from '@/components/batch/focus';
+import { focusFirstError } from '@/lib/client/focus';
 import { degrees, typedNumber } from '@/components/batch/figures';
 import { Box } from '@/components/ui/Box';
 import { Button } from '@/components/ui/Button';

@@ -17,6 +17,7 @@ import { UnitField } from '@/components/units/UnitField';
 import { useBatches } from '@/lib/client/batches';
 import { rackBatch, topUpBatch, useDrink } from '@/lib/client/cellarwork';
 import { ClientError } from '@/lib/client/fetcher';
+import { focusFirstError } from '@/lib/client/focus';
 import type { BatchBody } from '@/lib/contracts/batches';
 import { rackForm, topUpBatchForm, type MovedBody } from '@/lib/contracts/family';
 import { NECKS } from '@/lib/core/types';
@@ -71,6 +72,7 @@ export function RackForm({ keptAs, batch, rack, now, timeZone }: { keptAs: strin
     setErrors(known);
     const stray = Object.keys(known).find((field) => !(field in draft));
     if (stray) setFailed(known[stray] ?? null);
+    focusFirstError();
   }
 
   async function send(event: FormEvent) {

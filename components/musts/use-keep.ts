@@ -1,5 +1,5 @@
 import { useState } from 'react';
-import { focusFirstError } from '@/components/batch/focus';
+import { focusFirstError } from '@/lib/client/focus';
 import { ClientError } from '@/lib/client/fetcher';
 import type { MustSheetBody } from '@/lib/contracts/musts';
 import { checked, type SheetDraft, type SheetErrors } from './draft';

@@ -3,6 +3,7 @@
 import { useState } from 'react';
 import type { z } from 'zod';
 import { ClientError } from './fetcher';
+import { focusFirstError } from './focus';
 import { sentencesOf } from '../contracts/issues';
 
 /** First sentence of what is wrong, by the contract's own path: `parts.0.volume_l`. */
@@ -25,6 +26,7 @@ export function useSend<S extends z.ZodType, A>(schema: S, send: (form: z.output
     const found = firstOf(fields);
     setErrors(found);
     setFailed(Object.entries(found).find(([path]) => !shows(path))?.[1] ?? null);
+    focusFirstError();
   }
 
   async function submit(input: unknown) {

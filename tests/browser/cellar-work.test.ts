@@ -171,6 +171,8 @@ describe('what is done to a drink', () => {
     await page.getByText('Tag 31 is on Sharp crab too.').waitFor();
     await page.getByLabel('Tag', { exact: true }).fill('32');
     await expect.poll(() => page.getByText('is on Sharp crab too').count()).toBe(0);
+    await page.getByRole('button', { name: 'Split', exact: true }).last().click();
+    await expect.poll(() => page.getByLabel('How much goes in').evaluate((field) => field === document.activeElement)).toBe(true);
     await page.getByLabel('How much goes in').fill('4');
     await page.getByLabel('It holds, brim full').fill('4.6');
     await page.getByText('6 L stays in Long hedge.').waitFor();
