@@ -1,10 +1,11 @@
 import '@/lib/config/dot-env';
 import { randomBytes } from 'node:crypto';
-import { existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import { existsSync, readFileSync, writeFileSync } from 'node:fs';
 import { join, resolve } from 'node:path';
 import { Client } from 'pg';
 import { AUTH_SECRET_FILE, DATABASE_URL_FILE, EnvError, FIRST_S3_PORT, parseEnv, STORAGE_URL_FILE, type Env } from '@/lib/config/env';
 import { buildWeb } from './lib/build';
+import { takeDataFolder } from './lib/data-folder';
 import { portIsFree, startCluster, type Cluster } from './lib/postgres';
 import { Processes, waitUntil } from './lib/processes';
 
@@ -28,29 +29,6 @@ async function timed<T>(what: string, work: () => Promise<T>): Promise<T> {
     process.stdout.write(' failed\n');
     throw error;
   }
-}
-
-/** Is that process a start of ours? A number left over from before a reboot may be anybody's. */
-function isOurs(pid: number): boolean {
-  try {
-    return readFileSync(`/proc/${pid}/cmdline`, 'utf8').includes('scripts/start.ts');
-  } catch {
-    return false;
-  }
-}
-
-/** One start at a time in a data folder. */
-function takeDataFolder(folder: string): () => void {
-  const file = join(folder, 'start.pid');
-  try {
-    mkdirSync(folder, { recursive: true });
-  } catch (error) {
-    throw new StartError(`The folder DATA_DIR (${folder}) cannot be made: ${(error as Error).message}. Name another one.`);
-  }
-  const other = existsSync(file) ? Number(readFileSync(file, 'utf8')) : 0;
-  if (other && other !== process.pid && isOurs(other)) throw new StartError(`Fallbright already runs on ${folder} (process ${other}). Stop it first, or set DATA_DIR to another folder.`);
-  writeFileSync(file, String(process.pid));
-  return () => rmSync(file, { force: true });
 }
 
 async function checkPorts(env: Env, mailbox: boolean, storage: boolean): Promise<void> {
@@ -110,7 +88,7 @@ async function main(): Promise<void> {
   // Asked before SMTP_URL is filled in for the parts.
   const mailbox = !process.env.SMTP_URL;
   const storage = !env.S3_ENDPOINT;
-  const releaseFolder = takeDataFolder(env.DATA_DIR);
+  const releaseFolder = await takeDataFolder(env.DATA_DIR);
   let cluster: Cluster | null = null;
   let stopping: Promise<void> | undefined;
   const building = new AbortController();
@@ -121,7 +99,7 @@ async function main(): Promise<void> {
       building.abort();
       await processes.stop();
       await cluster?.stop();
-      releaseFolder();
+      await releaseFolder();
     })());
   for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP'] as const)
     process.on(signal, () => {

@@ -12,6 +12,9 @@ const url = (...protocols: string[]) =>
     .refine((value) => protocols.some((protocol) => value.startsWith(`${protocol}://`)) && URL.canParse(value), `must be a URL that begins with ${protocols.map((p) => `${p}://`).join(' or ')}`)
     .optional();
 
+/** Of 32 random hexadecimal digits fewer are different in one secret of 28 million; a letter held down has one. */
+const LEAST_SECRET_LETTERS = 8;
+
 const schema = z.object({
   NODE_ENV: z.enum(['development', 'production', 'test'], 'must be development, production or test').default('production'),
   HOST: z.string().min(1).default('127.0.0.1'),
@@ -23,7 +26,11 @@ const schema = z.object({
   PGPORT_LOCAL: port(25432),
   DATA_DIR: z.string().min(1).default('./.data').transform((path) => resolve(path)),
   PUBLIC_URL: url('http', 'https'),
-  AUTH_SECRET: z.string().min(32, 'must have at least 32 characters; unset it to have one made').optional(),
+  AUTH_SECRET: z
+    .string()
+    .min(32, 'must have at least 32 characters; unset it to have one made')
+    .refine((secret) => new Set(secret).size >= LEAST_SECRET_LETTERS, `must have at least ${LEAST_SECRET_LETTERS} different characters, such as those of \`openssl rand -base64 32\`; unset it to have one made`)
+    .optional(),
   SMTP_URL: url('smtp', 'smtps'),
   MAIL_FROM: z.string().min(3, 'must be an address').default('Fallbright <watch@fallbright.example>'),
   /** The pair for push messages; unset: made and kept in DATA_DIR. */

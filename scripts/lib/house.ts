@@ -1,9 +1,10 @@
-import { existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs';
+import { existsSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { Client } from 'pg';
 import { AUTH_SECRET_FILE, DATABASE_URL_FILE, databaseUrl, env, forgetEnv, storageUrl } from '@/lib/config/env';
 import { objectStore } from '@/lib/storage/objects';
 import type { Place } from './backup';
+import { makeDataFolder } from './data-folder';
 import { startCluster, type Cluster } from './postgres';
 import { startLocalStorage, type LocalStorage } from './storage';
 
@@ -41,7 +42,7 @@ async function ownDatabase(cluster: Cluster): Promise<string> {
 /** The house's database and storage, running or not: what start would start is started for as long as it is needed. */
 export async function openHouse(): Promise<House> {
   const { DATA_DIR, DATABASE_URL, S3_ENDPOINT, S3_BUCKET, PGPORT_LOCAL } = env();
-  mkdirSync(DATA_DIR, { recursive: true });
+  makeDataFolder(DATA_DIR);
   let cluster: Cluster | null = null;
   let url = DATABASE_URL ?? (existsSync(join(DATA_DIR, DATABASE_URL_FILE)) ? databaseUrl() : null);
   if (DATABASE_URL === undefined && (url === null || !(await answers(url)))) {

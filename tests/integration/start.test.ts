@@ -106,6 +106,8 @@ describe('bash scripts/start.sh', { timeout: 2 * PATIENCE_MS }, () => {
     ['PORT', 'eighty', /The variable PORT must be a port number/],
     ['MQTT_PORT', '70000', /The variable MQTT_PORT must be 1 to 65535/],
     ['AUTH_SECRET', 'short', /The variable AUTH_SECRET must have at least 32 characters/],
+    ['AUTH_SECRET', 'a'.repeat(36), /The variable AUTH_SECRET must have at least 8 different characters/],
+    ['DATA_DIR', '/proc/nowhere/data', /The variable DATA_DIR names a folder \(\/proc\/nowhere\/data\) that cannot be made or written in: .*\. Name another one\./],
     ['DATABASE_URL', 'mysql://x', /The variable DATABASE_URL must be a URL that begins with postgres:\/\//],
     ['DEMO', 'yes', /The variable DEMO must be 0 or 1/],
     ['LOG_LEVEL', 'loud', /The variable LOG_LEVEL must be fatal, error, warn, info, debug, trace or silent\./],

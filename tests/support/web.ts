@@ -5,8 +5,8 @@ import { join, resolve } from 'node:path';
 import { encode } from 'next-auth/jwt';
 import { SignIn } from '@/db/models';
 import { buildWeb } from '@/scripts/lib/build';
+import { takeLock } from '@/scripts/lib/process-lock';
 import { freePort } from '@/scripts/lib/postgres';
-import { takeLock } from './process-lock';
 import { until } from './processes';
 
 const ROOT = resolve(import.meta.dirname, '../..');

@@ -3,7 +3,7 @@ import { once } from 'node:events';
 import { resolve } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { until } from '../../support/processes';
-import { takeLock } from '../../support/process-lock';
+import { takeLock } from '@/scripts/lib/process-lock';
 
 const named = (what: string) => `${what} ${process.pid}`;
 const HOLDER = `
@@ -12,7 +12,7 @@ console.log((await takeLock(process.env.LOCK_NAME)) ? 'held' : 'refused');
 setInterval(() => undefined, 1_000);
 `;
 
-describe('the lock of the web build', () => {
+describe('a lock between processes', () => {
   it('is held by one until it is given back', async () => {
     const lock = await takeLock(named('one'));
     expect(lock).not.toBeNull();
@@ -34,7 +34,7 @@ describe('the lock of the web build', () => {
   it('is held against other processes, and is free once its holder was killed', async () => {
     const child = spawn(process.execPath, ['--import', 'tsx', '--input-type=module', '-e', HOLDER], {
       cwd: resolve(import.meta.dirname, '../../..'),
-      env: { ...process.env, LOCK_MODULE: resolve(import.meta.dirname, '../../support/process-lock.ts'), LOCK_NAME: named('killed') },
+      env: { ...process.env, LOCK_MODULE: resolve(import.meta.dirname, '../../../scripts/lib/process-lock.ts'), LOCK_NAME: named('killed') },
       stdio: ['ignore', 'pipe', 'inherit'],
     });
     try {
