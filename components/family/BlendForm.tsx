@@ -66,7 +66,7 @@ export function BlendForm({ keptAs, batch, now, timeZone }: { keptAs: string; ba
           <Sentence>{`: ${litres(answer.batch.volume_l)}${answer.reading ? `; what went in stood at ${answer.reading.gravity.toFixed(3)}, ${percent(answer.reading.abv_percent)}` : ''}.`}</Sentence>
         </p>
         <p className="type-reason text-ink2">Two drinks that had finished may begin again together. Keep it under an airlock and read it by hand; its bench begins anew.</p>
-        <How how={answer.how} of="the blend" />
+        {answer.how && <How how={answer.how} of="the blend" />}
       </section>
     );
   }

@@ -124,7 +124,8 @@ export const blendForm = z
     if (value.parts.some((part) => part.batch_id === value.into_batch_id)) tell('parts', 'a batch cannot be blended into itself');
   });
 export type BlendForm = z.infer<typeof blendForm>;
-export const blendResult = z.object({ batch: batchSchema, reading: readout.nullable(), how: howSchema });
+/** `how` is null where it had been done before: what went in is reckoned only as it is poured. */
+export const blendResult = z.object({ batch: batchSchema, reading: readout.nullable(), how: howSchema.nullable() });
 
 /** `GET /api/v1/batches/{id}/family`. */
 export const familySchema = z.object({

@@ -1,5 +1,5 @@
 import 'server-only';
-import { BaseError, ConnectionError, DatabaseError } from 'sequelize';
+import { BaseError, ConnectionError, DatabaseError, ForeignKeyConstraintError, UniqueConstraintError } from 'sequelize';
 import { AppError, InvalidError, ThrottledError } from '../errors';
 import { logFor } from '../log';
 import { problemResponse } from './problem-response';
@@ -29,6 +29,9 @@ export function databaseIsAway(error: unknown): boolean {
   return cause instanceof Error && /^Connection terminated/.test(cause.message);
 }
 
+/** What was there when a service looked has gone since, or what was not there has come. */
+const isAnothersDoing = (error: unknown): boolean => error instanceof ForeignKeyConstraintError || error instanceof UniqueConstraintError;
+
 /** Turns whatever was thrown into an answer: ours as they are, a missing database as 503, the rest logged whole and shown blank. */
 export function problemOf(error: unknown, request: { method: string; path: string }): Response {
   if (error instanceof InvalidError) return problemResponse(error.code, error.message, { errors: error.fields });
@@ -37,6 +40,10 @@ export function problemOf(error: unknown, request: { method: string; path: strin
   if (databaseIsAway(error)) {
     log.warn({ err: error, ...request }, 'the database did not answer');
     return problemResponse('unavailable', 'The database does not answer right now. What was kept is safe; try again in a moment.', { headers: { 'retry-after': String(RETRY_AFTER_UNAVAILABLE_S) } });
+  }
+  if (isAnothersDoing(error)) {
+    log.warn({ err: error, ...request }, 'two requests were in each other’s way');
+    return problemResponse('conflict', 'Somebody changed the same at the same moment. Look at it again before you try once more.');
   }
   log.error({ err: error, ...request }, 'an unexpected error');
   return problemResponse('internal', 'It has been written down. Try again; if it stays, look at the log of the server.');

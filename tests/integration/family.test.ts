@@ -58,6 +58,12 @@ describe('a racking', () => {
     await expect(rackBatch(brewer, batch.id, rackForm.parse({ at, left_l: 0, vessel: { vessel_l: 3 } }), clock)).rejects.toBeInstanceOf(InvalidError);
     await expect(rackBatch(brewer, batch.id, rackForm.parse({ at, left_l: 4.4 }), clock)).rejects.toBeInstanceOf(InvalidError);
     expect((await Batch.findByPk(batch.id))?.volumeL).toBeCloseTo(4.3, 9);
+    // Taken back since, it is not done by an answer that came late.
+    const [racked] = (await rackBatch(brewer, batch.id, form, clock)).entries;
+    await removeEntry(brewer, batch.id, racked!.id, clock);
+    const { volumeL } = await Batch.findByPk(batch.id, { rejectOnEmpty: true });
+    expect((await rackBatch(brewer, batch.id, form, clock)).batch.volume_l).toBe(volumeL);
+    expect(await Entry.count({ where: { batchId: batch.id, kind: 'rack' } })).toBe(1);
   });
 });
 
@@ -155,6 +161,27 @@ describe('drink that moves between vessels', () => {
     expect(first.parts.map(({ name }) => name)).toEqual(['Quince', 'Ash']);
     expect(again.parts.map(({ id }) => id).toSorted()).toEqual(first.parts.map(({ id }) => id).toSorted());
     expect(again.batch.volume_l).toBeCloseTo(1.5, 9);
+  });
+
+  it.each([['a new vessel', null], ['one that is there', 'there']])('is blended into %s once however often it is sent, though it is no longer where it came from', async (_, there) => {
+    const brewer = await buildMember('brewer');
+    const [a, b] = [await ciderAt(brewer), await ciderAt(brewer)];
+    const into = there ? { into_batch_id: (await ciderAt(brewer, { volumeL: 1, vesselL: 12 })).id } : { into: { name: 'Both', vessel_l: 12 } };
+    const form = blendForm.parse({ at, client_id: crypto.randomUUID(), parts: [{ batch_id: a.id, volume_l: 4.5 }, { batch_id: b.id, volume_l: 4 }], ...into });
+    const first = await blendBatches(brewer, form, clock);
+    const again = await blendBatches(brewer, form, clock);
+    expect(again.batch).toMatchObject({ id: first.batch.id, volume_l: first.batch.volume_l });
+    expect(again.reading).toBeNull();
+    expect((await Batch.findByPk(b.id))?.volumeL).toBeCloseTo(0.5, 9);
+    expect(await BatchLink.count({ where: { fromBatch: b.id } })).toBe(1);
+  });
+
+  it('is not blended by a number that something else was sent under', async () => {
+    const brewer = await buildMember('brewer');
+    const [a, b] = [await ciderAt(brewer), await ciderAt(brewer)];
+    const client_id = crypto.randomUUID();
+    await createEntry(brewer, a.id, entryForm.parse({ kind: 'note', at, text: 'x', client_id }), clock);
+    await expect(blendBatches(brewer, blendForm.parse({ at, client_id, parts: [{ batch_id: a.id, volume_l: 1 }, { batch_id: b.id, volume_l: 1 }], into: { name: 'Both', vessel_l: 5 } }), clock)).rejects.toBeInstanceOf(ConflictError);
   });
 
   it('leaves lines in the log that cannot be taken back alone, since other batches rest on them', async () => {

@@ -1,6 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { inTransaction } from '@/db/client';
-import { CalendarFeed } from '@/db/models';
+import { CalendarFeed, Person } from '@/db/models';
 import { authorize } from '@/lib/auth/authorize';
 import { hashLinkToken, linkTokenOf } from '@/lib/auth/link-tokens';
 import type { Actor } from '@/lib/auth/policies';
@@ -28,6 +28,8 @@ export async function makeCalendar(actor: Actor, clock: Clock = systemClock): Pr
   authorize(actor, 'jobs.read');
   const now = new Date(clock.now());
   return inTransaction(async (transaction) => {
+    // Two that are asked for at once follow one another.
+    await Person.findByPk(actor.personId, { attributes: ['id'], transaction, lock: transaction.LOCK.NO_KEY_UPDATE });
     await CalendarFeed.update({ revokedAt: now }, { where: open(actor), transaction });
     const id = randomUUID();
     const feed = await CalendarFeed.create({ id, cellarId: actor.cellarId, personId: actor.personId, tokenHash: hashLinkToken(linkTokenOf('calendar', id)), createdAt: now }, { transaction });

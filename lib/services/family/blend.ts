@@ -1,7 +1,7 @@
 import type { Transaction } from 'sequelize';
 import type { z } from 'zod';
 import { inTransaction } from '@/db/client';
-import { Batch, Entry } from '@/db/models';
+import { Batch, BatchLink, Entry } from '@/db/models';
 import { linksInto } from '@/db/queries/family';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
@@ -36,7 +36,7 @@ export async function blendBatches(actor: Actor, input: BlendForm, clock: Clock 
     const ids = input.parts.map((part) => part.batch_id);
     const batches = await loadBatches(actor.cellarId, [...ids, ...(input.into_batch_id ? [input.into_batch_id] : [])], transaction);
     const known = await sentBefore(actor.cellarId, input.client_id, transaction);
-    if (known) return answer(actor, known.batchId, await blended(batches, input, at, transaction), transaction);
+    if (known) return sameAgain(actor, known.batchId, ids, transaction);
     const { parts, moved } = await blended(batches, input, at, transaction);
     const reading = moved.reading;
     if (!reading) throw new InvalidError('Nothing goes in.', { parts: ['say how much of each'] });
@@ -46,6 +46,13 @@ export async function blendBatches(actor: Actor, input: BlendForm, clock: Clock 
     await auditBy(actor, 'batch.blended', target.id, { from: input.parts.map((part) => ({ batch: part.batch_id, litres: part.volume_l })) }, transaction);
     return answer(actor, target.id, { parts, moved }, transaction);
   });
+}
+
+/** What went in is no longer where it came from: a blend that was sent twice is not reckoned again. */
+async function sameAgain(actor: Actor, targetId: string, parts: readonly string[], transaction: Transaction): Promise<z.infer<typeof blendResult>> {
+  const poured = await BatchLink.count({ where: { toBatch: targetId, fromBatch: [...parts], kind: 'blend' }, transaction });
+  if (poured === 0) throw new ConflictError('This was sent for something else.');
+  return { batch: await getBatch(actor, targetId, transaction), reading: null, how: null };
 }
 
 async function answer(actor: Actor, id: string, { moved }: Awaited<ReturnType<typeof blended>>, transaction: Transaction): Promise<z.infer<typeof blendResult>> {

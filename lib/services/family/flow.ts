@@ -1,4 +1,4 @@
-import { Op, type Transaction } from 'sequelize';
+import type { Transaction } from 'sequelize';
 import { Batch, BatchLink, Entry } from '@/db/models';
 import type { Actor } from '@/lib/auth/policies';
 import type { TopUpForm } from '@/lib/contracts/family';
@@ -118,9 +118,9 @@ export async function pourIn(actor: Actor, batch: Batch, inflow: Inflow, topUp: 
   return entry;
 }
 
-/** An act that was sent twice: its first line, where it is there already. */
+/** An act that was sent twice: its first line, also where that was taken back since. */
 export async function sentBefore(cellarId: string, clientId: string | null, transaction: Transaction): Promise<Entry | null> {
-  return clientId === null ? null : Entry.findOne({ where: { cellarId, clientId, removedAt: { [Op.is]: null } }, transaction });
+  return clientId === null ? null : Entry.findOne({ where: { cellarId, clientId }, transaction });
 }
 
 export const shownReadout = (readout: Readout) => ({ volume_l: readout.volumeL, effective_og: readout.effectiveOg, gravity: readout.gravity, abv_percent: readout.abvPercent });

@@ -1,4 +1,4 @@
-import { DatabaseError } from 'sequelize';
+import { DatabaseError, ForeignKeyConstraintError, UniqueConstraintError } from 'sequelize';
 import { describe, expect, it } from 'vitest';
 import { NotFoundError, ThrottledError, UnauthenticatedError } from '@/lib/errors';
 import { problemOf } from '@/lib/http/problem';
@@ -28,6 +28,12 @@ describe('an error as a problem document (RFC 9457)', () => {
     const answer = problemOf(refusedBy(code), request);
     expect(answer.status).toBe(503);
     expect(Number(answer.headers.get('retry-after'))).toBeGreaterThan(0);
+  });
+
+  it.each([new UniqueConstraintError({}), new ForeignKeyConstraintError({})])('is a conflict where somebody else was there first: %s', async (error) => {
+    const answer = problemOf(error, request);
+    expect(answer.status).toBe(409);
+    expect((await answer.json()) as object).toMatchObject({ type: 'urn:fallbright:problem:conflict', detail: expect.stringMatching(/same moment/) as string });
   });
 
   it('tells nothing of what went wrong inside', async () => {
