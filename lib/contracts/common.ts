@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { plainTime } from './time';
 import { words } from './words';
 
 z.config({ customError: words });
@@ -6,9 +7,10 @@ z.config({ customError: words });
 /** Nothing here happened before, or will after; outside PostgreSQL and JavaScript read years differently. */
 const TIMES = { from: Date.UTC(1900, 0, 1), to: Date.UTC(2200, 0, 1) };
 
-/** RFC 3339 with a zone. */
-export const timestamp = z.iso
-  .datetime({ offset: true, error: 'must be a time with a zone, such as 2026-03-04T06:00:00Z' })
+/** RFC 3339 with a zone, in any of its spellings. */
+export const rfc3339 = (error: string) => z.string(error).overwrite(plainTime).check(z.iso.datetime({ offset: true, error, abort: true }));
+
+export const timestamp = rfc3339('must be a time with a zone, such as 2026-03-04T06:00:00Z')
   .refine((value) => Date.parse(value) >= TIMES.from && Date.parse(value) < TIMES.to, 'must be a time between 1900 and 2200');
 
 export const id = z.uuid('is not an identifier');

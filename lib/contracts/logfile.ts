@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { DRINK_KINDS, EVENT_KINDS, NECKS, type BatchSetup, type DrinkKind, type Instant, type Reading } from '../core/types';
+import { plainTime } from './time';
 
 /** The two files of `npm run assess`: a batch as JSON, its readings as CSV. */
 
@@ -10,9 +11,10 @@ const RFC3339 = /^(\d{4})-(\d{2})-(\d{2})[T ]([01]\d|2[0-3]):\d{2}(:\d{2}(\.\d+)
 
 /** Milliseconds of an RFC 3339 time with its zone; null for anything else, and for a day that its month does not have. */
 export function instantOf(text: string): Instant | null {
-  const [, year, month, day] = RFC3339.exec(text) ?? [];
+  const plain = plainTime(text);
+  const [, year, month, day] = RFC3339.exec(plain) ?? [];
   if (day === undefined || Number(day) > new Date(Date.UTC(Number(year), Number(month), 0)).getUTCDate()) return null;
-  const at = Date.parse(text.replace(' ', 'T'));
+  const at = Date.parse(plain.replace(' ', 'T'));
   return Number.isFinite(at) ? at : null;
 }
 

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { gravity, temperatureC } from './common';
+import { gravity, rfc3339, temperatureC } from './common';
 
 /** More than this in one message is refused whole. */
 export const MAX_READINGS_PER_MESSAGE = 500;
@@ -15,7 +15,7 @@ export const REFUSED_KEPT_DAYS = 30;
 const span = (low: number, high: number) => z.number(`must be a number from ${low} to ${high}`).min(low, `must be ${low} to ${high}`).max(high, `must be ${low} to ${high}`);
 
 const fields = z.object({
-  at: z.iso.datetime({ offset: true, error: 'at must be RFC 3339 with a zone, such as 2026-03-04T06:00:00Z' }).optional(),
+  at: rfc3339('at must be RFC 3339 with a zone, such as 2026-03-04T06:00:00Z').optional(),
   gravity: gravity.optional(),
   inclination: span(0, 90).optional(),
   temperature: temperatureC,

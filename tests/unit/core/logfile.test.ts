@@ -13,6 +13,7 @@ describe('the readers of a log', () => {
   it('take times with a zone and nothing else', () => {
     expect(instantOf('2026-03-04T06:00:00Z')).toBe(Date.UTC(2026, 2, 4, 6));
     expect(instantOf('2026-03-04T07:00:00+01:00')).toBe(Date.UTC(2026, 2, 4, 6));
+    expect(instantOf('2026-03-04t06:00:00z')).toBe(Date.UTC(2026, 2, 4, 6));
     expect(instantOf('2028-02-29T06:00:00Z')).toBe(Date.UTC(2028, 1, 29, 6));
     for (const text of ['2026-03-04T06:00:00', '2026-02-30', 'yesterday', '1772604000', '', '2026-02-30T06:00:00Z', '2026-02-29T06:00:00Z', '2026-13-01T06:00:00Z', '2026-03-04T24:00:00Z']) expect(instantOf(text)).toBeNull();
   });

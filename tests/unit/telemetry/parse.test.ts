@@ -28,6 +28,11 @@ describe('a message that is right', () => {
     expect(parse({ ...good, at: '2026-03-04T07:45:00.1234567+02:00' }).accepted[0]?.measuredAt).toBe(NOW - 900_000 + 123);
   });
 
+  it('may write its time in small letters, and in a leap second (RFC 3339, 5.6)', () => {
+    expect(parse({ ...good, at: '2026-03-04t05:45:00.5z' }).accepted[0]?.measuredAt).toBe(NOW - 900_000 + 500);
+    expect(parse({ ...good, at: '2016-12-31T23:59:60Z' }).accepted[0]?.measuredAt).toBe(Date.UTC(2017, 0, 1));
+  });
+
   it.each([
     ['the lowest of everything', { ...good, gravity: 0.97, temperature: -10, battery: 0, signal: -130, foam: 0, sequence: 0 }],
     ['the highest of everything', { ...good, gravity: 1.2, temperature: 60, battery: 15, signal: 0, foam: 500, inclination: 90, sequence: Number.MAX_SAFE_INTEGER }],
@@ -108,7 +113,7 @@ describe('a reading that is wrong is refused alone, and the reason names the fie
     ['a time in words', { ...good, at: 'yesterday' }, /^at must be RFC 3339/],
     ['a 30th of February', { ...good, at: '2026-02-30T00:00:00Z' }, /^at must be RFC 3339/],
     ['an hour 24', { ...good, at: '2026-03-03T24:00:00Z' }, /^at must be RFC 3339/],
-    ['a second 60', { ...good, at: '2016-12-31T23:59:60Z' }, /^at must be RFC 3339/],
+    ['a second 60 at noon', { ...good, at: '2016-12-31T12:00:60Z' }, /^at must be RFC 3339/],
     ['a clock never set', { ...good, at: '1970-01-01T00:00:12Z' }, /^at is before 2015/],
     ['just before 2015', { ...good, at: '2014-12-31T23:59:59.999Z' }, /^at is before 2015/],
     ['just over ten minutes ahead', { ...good, at: '2026-03-04T06:10:00.001Z' }, /^at is more than 10 min ahead/],
