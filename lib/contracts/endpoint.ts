@@ -19,9 +19,11 @@ export interface Endpoint {
   params?: z.ZodObject;
   query?: z.ZodType;
   body?: z.ZodType;
+  /** The kinds of file of which the body is one, in place of JSON. */
+  file?: readonly string[];
   /** Where the body may be larger than a form. */
   limitBytes?: number;
-  /** Where it may take longer than a page waits. */
+  /** Where it may take longer than a page waits, once the body is here. */
   deadlineMs?: number;
   /** Null: no JSON body. */
   response: z.ZodType | null;

@@ -3,7 +3,7 @@ import { id } from './common';
 import { byId, endpoint } from './endpoint';
 import { ARCHIVE_LIMIT_BYTES, importForm, importList, importPreviewForm, importPreviewSchema, importSchema } from './imports';
 import { byDelivery, createdWebhookSchema, createWebhook, deliveryList, updateWebhook, webhookList, webhookSchema } from './webhooks';
-import { photoFile, photoList, photoSchema, photoTarget } from './photos';
+import { PHOTO_LIMIT_BYTES, PHOTO_TYPES, photoFile, photoList, photoSchema, photoTarget } from './photos';
 
 const exportQuery = z.object({ batch: id.optional() });
 
@@ -11,7 +11,7 @@ const exportQuery = z.object({ batch: id.optional() });
 export const endpointsData = {
   listBatchPhotos: endpoint({ method: 'GET', path: '/batches/{id}/photos', summary: 'Photos in the log of a batch', access: 'batches.read', params: byId, response: photoList, status: 200 }),
   listLotPhotos: endpoint({ method: 'GET', path: '/lots/{id}/photos', summary: 'Photos of a lot and of its tasting notes', access: 'lots.read', params: byId, response: photoList, status: 200 }),
-  keepPhoto: endpoint({ method: 'POST', path: '/photos', summary: 'Hang a photo on an entry, a lot or an own tasting note; the body is the picture itself', access: 'member', query: photoTarget, response: photoSchema, status: 201 }),
+  keepPhoto: endpoint({ method: 'POST', path: '/photos', summary: 'Hang a photo on an entry, a lot or an own tasting note; the body is the picture itself', access: 'member', query: photoTarget, file: PHOTO_TYPES, limitBytes: PHOTO_LIMIT_BYTES, deadlineMs: 60_000, response: photoSchema, status: 201 }),
   removePhoto: endpoint({ method: 'DELETE', path: '/photos/{id}', summary: 'Take a photo off', access: 'member', params: byId, response: null, status: 204 }),
   openPhoto: endpoint({ method: 'GET', path: '/photos/{id}/{size}', summary: 'A photo’s file; the address is the key, and ends by itself', access: 'anyone', params: photoFile.params, query: photoFile.query, response: null, status: 200 }),
 

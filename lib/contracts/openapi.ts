@@ -29,6 +29,13 @@ function securityOf({ access, by }: Endpoint): Array<Record<string, []>> {
   return access === 'person' || by === 'session' ? [{ session: [] }] : [{ session: [] }, { token: [] }];
 }
 
+const PROBLEM = { content: { 'application/problem+json': { schema: { $ref: '#/components/schemas/Problem' } } } };
+
+function requestBody({ body, file }: Endpoint): Record<string, unknown> {
+  if (body) return { requestBody: { required: true, content: { 'application/json': { schema: schemaOf(body, 'input') } } } };
+  return file ? { requestBody: { required: true, content: Object.fromEntries(file.map((type) => [type, {}])) } } : {};
+}
+
 function operation(name: string, endpoint: Endpoint): Record<string, unknown> {
   const content = endpoint.response && { content: { 'application/json': { schema: schemaOf(endpoint.response, 'output') } } };
   const refusals = endpoint.access === 'anyone' ? [] : REFUSALS;
@@ -38,10 +45,11 @@ function operation(name: string, endpoint: Endpoint): Record<string, unknown> {
     security: securityOf(endpoint),
     ...(endpoint.access !== 'anyone' && { 'x-access': endpoint.access }),
     parameters: parameters(endpoint),
-    ...(endpoint.body && { requestBody: { required: true, content: { 'application/json': { schema: schemaOf(endpoint.body, 'input') } } } }),
+    ...requestBody(endpoint),
     responses: {
       [endpoint.status]: { description: 'As asked', ...content },
-      ...Object.fromEntries(refusals.map(([status, description]) => [status, { description, content: { 'application/problem+json': { schema: { $ref: '#/components/schemas/Problem' } } } }])),
+      ...Object.fromEntries(refusals.map(([status, description]) => [status, { description, ...PROBLEM }])),
+      default: { description: 'Whatever else is in the way; `type` says what', ...PROBLEM },
     },
   };
 }

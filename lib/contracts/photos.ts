@@ -7,6 +7,9 @@ export const photoTarget = z
   .refine((target) => [target.entry, target.lot, target.tasting].filter(Boolean).length === 1, { error: 'a photo hangs on one entry, lot or tasting', path: ['entry'] });
 export type PhotoTarget = z.infer<typeof photoTarget>;
 
+/** Forms that are taken, by their content and not by what they are called. */
+export const PHOTO_TYPES = ['image/jpeg', 'image/png', 'image/webp', 'image/avif'] as const;
+
 /** As cameras make them; more is refused before it is read. */
 export const PHOTO_LIMIT_BYTES = 15_000_000;
 

@@ -31,7 +31,9 @@ export async function readBytes(request: Request, limit: number): Promise<Uint8A
   let size = 0;
   const reader = request.body?.getReader();
   while (reader) {
-    const { done, value } = await reader.read();
+    const { done, value } = await reader.read().catch(() => {
+      throw new RequestError('malformed', 'The body ended before it was whole.');
+    });
     if (done) break;
     size += value.length;
     if (size > limit) {

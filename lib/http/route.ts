@@ -8,7 +8,7 @@ import type { Endpoint } from '../contracts/endpoints';
 import { ForbiddenError, InvalidError, NotFoundError, UnauthenticatedError, UnavailableError, type FieldErrors } from '../errors';
 import { withOrigin } from '../origin';
 import { addressOf } from './address';
-import { readJson } from './body';
+import { BODY_LIMIT_BYTES, readBytes, readJson } from './body';
 import { metrics } from './metrics';
 import { problemOf } from './problem';
 import { requireSameSite } from './same-site';
@@ -29,6 +29,8 @@ export interface RouteContext<E extends Endpoint> {
   params: Part<E, 'params'>;
   query: Part<E, 'query'>;
   body: Part<E, 'body'>;
+  /** The body where it is a file. */
+  file: E extends Record<'file', readonly string[]> ? Uint8Array : undefined;
   /** Headers to add to a good answer. */
   headers: Headers;
 }
@@ -43,14 +45,14 @@ const DEADLINE_MS = 6_000;
 export function route<E extends Endpoint>(endpoint: E, handle: (context: RouteContext<E>) => Promise<Answer<E['response']>>) {
   return async (request: NextRequest, context: { params?: Promise<Record<string, string>> }): Promise<Response> => {
     const done = metrics().requests.startTimer({ method: endpoint.method, route: endpoint.path });
-    const response = await inTime(answer(endpoint, handle, request, context.params), request.method === 'GET', endpoint.deadlineMs).catch((error: unknown) => problemOf(error, { method: request.method, path: request.nextUrl.pathname }));
+    const response = await answer(endpoint, handle, request, context.params).catch((error: unknown) => problemOf(error, { method: request.method, path: request.nextUrl.pathname }));
     done({ status: response.status });
     return response;
   };
 }
 
 async function answer<E extends Endpoint>(endpoint: E, handle: (context: RouteContext<E>) => Promise<Answer<E['response']>>, request: NextRequest, rawParams: Promise<Record<string, string>> | undefined): Promise<Response> {
-  const { session, actor } = await admit(endpoint, request);
+  const { session, actor } = await inTime(admit(endpoint, request), endpoint.method === 'GET' ? 'reading' : 'asking');
   const headers = new Headers({ 'cache-control': 'private, no-store' });
   // For the service worker, which keeps an answer under this name alone.
   if (actor) headers.set('x-fallbright-for', `${actor.personId}.${actor.cellarId}`);
@@ -61,11 +63,17 @@ async function answer<E extends Endpoint>(endpoint: E, handle: (context: RouteCo
     // Next.js gives none where the path has none.
     params: parseParams(endpoint, (await rawParams) ?? {}),
     query: parse(endpoint.query, queryOf(request), 'Some values of the query are wrong.'),
+    // However slow its line is, a body has time to come in.
     body: endpoint.body ? parse(endpoint.body, await readJson(request, endpoint.limitBytes), 'Some values are wrong.') : undefined,
+    file: endpoint.file ? await readBytes(request, endpoint.limitBytes ?? BODY_LIMIT_BYTES) : undefined,
     headers,
     // The conditional types of the context follow the endpoint's literal; the checks above make them hold.
   } as RouteContext<E>;
-  const result = await withOrigin(originOf(request, session), () => handle(context));
+  const work = async () => answered(endpoint, await withOrigin(originOf(request, session), () => handle(context)), headers);
+  return inTime(work(), endpoint.method === 'GET' ? 'reading' : 'changing', endpoint.deadlineMs);
+}
+
+function answered(endpoint: Endpoint, result: unknown, headers: Headers): Response {
   if (result instanceof Response) return result;
   if (endpoint.response === null) return new Response(null, { status: endpoint.status, headers });
   return Response.json(endpoint.response.parse(result), { status: endpoint.status, headers });
@@ -133,11 +141,18 @@ function parse(schema: z.ZodType | undefined, value: unknown, message: string): 
 
 export const fieldErrors = (error: z.ZodError): FieldErrors => sentencesOf(error.issues, 'body');
 
-/** Answers "not now" where the database stalls. `reads`: nothing was to be changed. */
-export async function inTime(work: Promise<Response>, reads = false, deadlineMs = DEADLINE_MS): Promise<Response> {
+/** What a request that the database keeps waiting is told, by what may have been done meanwhile. */
+const LATE = {
+  asking: 'The database takes too long right now. Nothing was changed; try again in a moment.',
+  reading: 'It could not be read just now; trying again.',
+  changing: 'The database takes too long right now. Look whether the change was kept before you try again.',
+};
+
+/** Answers "not now" where the database stalls. */
+export async function inTime<T>(work: Promise<T>, doing: keyof typeof LATE, deadlineMs = DEADLINE_MS): Promise<T> {
   let timer: NodeJS.Timeout | undefined;
   const late = new Promise<never>((_, reject) => {
-    timer = setTimeout(() => reject(new UnavailableError(reads ? 'It could not be read just now; trying again.' : 'The database takes too long right now. Look whether the change was kept before you try again.')), deadlineMs);
+    timer = setTimeout(() => reject(new UnavailableError(LATE[doing])), deadlineMs);
   });
   try {
     return await Promise.race([work, late]);

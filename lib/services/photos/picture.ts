@@ -1,11 +1,11 @@
 import { fileTypeFromBuffer } from 'file-type';
 import sharp from 'sharp';
+import { PHOTO_TYPES } from '@/lib/contracts/photos';
 import { InvalidError } from '@/lib/errors';
 import { turns } from '@/lib/turns';
 import { isPlainJpeg } from './plain-jpeg';
 
-/** Forms that are taken, by their content and not by what they are called. */
-const TAKEN: ReadonlySet<string> = new Set(['image/jpeg', 'image/png', 'image/webp', 'image/avif']);
+const TAKEN: ReadonlySet<string> = new Set(PHOTO_TYPES);
 /** A camera's 48 megapixels pass; a few bytes that unfold into a gigabyte do not. */
 const MOST_PIXELS = 50_000_000;
 const LARGE = { width: 2_048, height: 2_048 };
