@@ -163,6 +163,13 @@ describe('taking it in hand', () => {
     expect((await h.mails()).slice(2)).toMatchObject([{ personId: h.hand.personId, payload: { event: 'look_again' } }]);
   });
 
+  it('is looked at again in time to come, and by nobody in the past', async () => {
+    await h.stalled();
+    const [alert] = (await list(h.hand)).items;
+    await expect(acknowledgeAlert(h.hand, alert!.id, { note: null, look_again_at: new Date(h.clock.now()).toISOString() }, { clock: h.clock })).rejects.toMatchObject({ fields: { look_again_at: ['must lie ahead'] } });
+    expect((await list(h.hand)).items).toMatchObject([{ state: 'open', acknowledged_by: null }]);
+  });
+
   it('is open again when whoever has it leaves the cellar, and the others are told', async () => {
     await h.stalled();
     const [alert] = (await list(h.keeper)).items;

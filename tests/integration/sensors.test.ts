@@ -206,6 +206,9 @@ describe('where a sensor was', () => {
     const batch = await buildBatch({ cellarId: brewer.cellarId });
     const { sensor } = await buildSensor({ cellarId: brewer.cellarId });
     await expect(updateSensor(brewer, sensor.identifier, { batch_id: batch.id, since: iso(NOW + HOUR) }, clock)).rejects.toThrow('lies ahead');
+    // A clock that runs a little fast means now.
+    await updateSensor(brewer, sensor.identifier, { batch_id: batch.id, since: iso(NOW + 30_000) }, clock);
+    expect((await listStays(brewer, sensor.identifier)).items).toMatchObject([{ from: iso(NOW), to: null }]);
   });
 });
 

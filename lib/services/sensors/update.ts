@@ -7,6 +7,7 @@ import { ConflictError, InvalidError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { loadBatch } from '../batches/load';
 import { notifyChange } from '../changes';
+import { notAhead } from '../not-ahead';
 import { getSensor } from './get';
 import { loadSensor, placeSensor, takeOut } from './place';
 
@@ -15,8 +16,7 @@ export async function updateSensor(actor: Actor, identifier: string, input: Upda
   authorize(actor, 'sensors.assign');
   if (input.name !== undefined || input.interval_s !== undefined || input.disabled !== undefined) authorize(actor, 'sensors.manage');
   const now = new Date(clock.now());
-  const since = input.since === undefined ? now : new Date(input.since);
-  if (since > now) throw new InvalidError('The time lies ahead.', { since: ['lies ahead'] });
+  const since = input.since === undefined ? now : new Date(Math.min(now.getTime(), notAhead(input.since, now.getTime(), 'since').getTime()));
   return inTransaction(async (transaction) => {
     const sensor = await loadSensor(actor.cellarId, identifier, transaction);
     if (input.name !== undefined) sensor.set('name', input.name);
