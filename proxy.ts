@@ -2,12 +2,10 @@ import { randomBytes } from 'node:crypto';
 import { NextResponse, type NextRequest } from 'next/server';
 import { sessionCookie } from './lib/auth/cookies';
 import { env } from './lib/config/env';
-import { wrongMethod } from './lib/http/methods';
+import { securityHeaders } from './lib/http/headers';
 
 /** Pages that people see before they have signed in. */
 const OPEN = /^\/(sign-in|share|take|invitation|mail-address)(\/|$)/;
-
-const YEAR_S = 31_536_000;
 
 /** OWASP ASVS 5.0 3.4.3: only scripts that this answer names run, and what they load. */
 function contentSecurityPolicy(nonce: string): string {
@@ -31,27 +29,13 @@ function contentSecurityPolicy(nonce: string): string {
 }
 
 function secured<R extends Response>(response: R): R {
-  response.headers.set('x-content-type-options', 'nosniff');
-  response.headers.set('referrer-policy', 'strict-origin-when-cross-origin');
-  response.headers.set('x-frame-options', 'DENY');
-  response.headers.set('cross-origin-opener-policy', 'same-origin');
-  response.headers.set('cross-origin-resource-policy', 'same-origin');
-  response.headers.set('permissions-policy', 'camera=(self), microphone=(), geolocation=(), payment=(), usb=()');
-  if (env().PUBLIC_URL.startsWith('https:')) response.headers.set('strict-transport-security', `max-age=${YEAR_S}; includeSubDomains`);
+  for (const [name, value] of Object.entries(securityHeaders())) response.headers.set(name, value);
   return response;
 }
 
-/** Headers for every answer, and the way to the sign-in page for those without a session. Whether the session holds, each page and route asks the database. */
+/** Headers for every page, and the way to the sign-in page for those without a session. Whether the session holds, each page and route asks the database. The API has a door of its own: `lib/http/api-door.ts`. */
 export function proxy(request: NextRequest): Response {
   const { pathname, search } = request.nextUrl;
-  if (pathname.startsWith('/api/')) {
-    const response = secured(wrongMethod({ method: request.method, pathname }) ?? NextResponse.next());
-    // A printed sheet is shown inside our own page; nothing else of the API is ever framed.
-    const sheet = pathname.endsWith('.pdf');
-    if (sheet) response.headers.set('x-frame-options', 'SAMEORIGIN');
-    response.headers.set('content-security-policy', sheet ? "default-src 'none'; object-src 'self'; style-src 'unsafe-inline'; frame-ancestors 'self'" : "default-src 'none'; frame-ancestors 'none'");
-    return response;
-  }
   if (!OPEN.test(pathname) && !request.cookies.has(sessionCookie())) {
     const target = new URL('/sign-in', request.url);
     if (pathname !== '/') target.searchParams.set('next', pathname + search);
@@ -67,5 +51,5 @@ export function proxy(request: NextRequest): Response {
 }
 
 export const config = {
-  matcher: ['/((?!_next/static|_next/image|favicon.ico|icon.svg|manifest.webmanifest|sw.js|.*\\.(?:png|svg|woff2?)$).*)'],
+  matcher: ['/((?!api/|_next/static|_next/image|favicon.ico|icon.svg|manifest.webmanifest|sw.js|.*\\.(?:png|svg|woff2?)$).*)'],
 };

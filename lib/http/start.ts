@@ -1,6 +1,7 @@
 import 'server-only';
 import { authSecret, env } from '../config/env';
 import { logFor } from '../log';
+import { guardApi } from './api-door';
 import { beforeEachRequest } from './before';
 import { eventHub } from './event-hub';
 import { refuseUnreadable } from './refuse';
@@ -11,6 +12,8 @@ import { refuseUnreadable } from './refuse';
  */
 export function startServer(): void {
   shareWithNextAuth();
+  guardApi();
+  // Last, so that it looks first.
   refuseUnreadable();
   eventHub().begin();
   for (const signal of ['SIGTERM', 'SIGINT'] as const) process.once(signal, endConnections);
