@@ -56,7 +56,7 @@ export function authOptions(from: SignInFrom): NextAuthOptions {
     useSecureCookies: env().PUBLIC_URL.startsWith('https:'),
     pages: { signIn: '/sign-in', error: '/sign-in', signOut: '/sign-in' },
     logger: {
-      error: (code, detail) => log.error({ code, detail }, 'sign-in failed'),
+      error: (code, detail) => log.error({ code, err: detail instanceof Error ? detail : (detail as { error?: unknown }).error }, 'sign-in failed'),
       warn: (code) => log.warn({ code }, 'sign-in warning'),
       debug: () => undefined,
     },

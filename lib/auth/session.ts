@@ -47,7 +47,7 @@ export async function sessionOf(jar: CookieJar): Promise<Session | null> {
   const rows = await openSession(signInId);
   const [first] = rows;
   if (!first) return null;
-  if (first.seenS > SEEN_EVERY_S) markSeen(signInId, SEEN_EVERY_S).catch((error: unknown) => logFor('auth').warn({ error }, 'could not note when a person was last seen'));
+  if (first.seenS > SEEN_EVERY_S) markSeen(signInId, SEEN_EVERY_S).catch((error: unknown) => logFor('auth').warn({ err: error }, 'could not note when a person was last seen'));
   return { signInId, token: null, personId: first.personId, actor: actorOf(rows, jar.get(cellarCookie())?.value) };
 }
 
@@ -58,7 +58,7 @@ export async function sessionOfBearer(header: string): Promise<Session | null> {
   const token = apiTokenOf(header);
   const row = token && (await openToken(hashApiToken(token)));
   if (!row) return null;
-  if (row.usedS === null || row.usedS > SEEN_EVERY_S) markTokenUsed(row.id, SEEN_EVERY_S).catch((error: unknown) => logFor('auth').warn({ error }, 'could not note when a token was last used'));
+  if (row.usedS === null || row.usedS > SEEN_EVERY_S) markTokenUsed(row.id, SEEN_EVERY_S).catch((error: unknown) => logFor('auth').warn({ err: error }, 'could not note when a token was last used'));
   return { signInId: null, token: { id: row.id, lastFour: row.lastFour }, personId: row.personId, actor: actorOfToken(row) };
 }
 
