@@ -59,11 +59,13 @@ export async function claimLetter(now: Date, leaseUntil: Date): Promise<ClaimedL
 /** What became of a try: it went, it failed for good, or it waits. */
 export type LetterOutcome = { sentAt: Date } | { failedAt: Date; error: string } | { nextAt: Date; refusals: number; error: string };
 
-export async function markLetter(id: number, outcome: LetterOutcome): Promise<void> {
+/** Whoever is late, and finds that another has taken the letter since, has no more to say of it but that it went. */
+export async function markLetter({ id, attempts }: Pick<ClaimedLetter, 'id' | 'attempts'>, outcome: LetterOutcome): Promise<void> {
   const { sentAt = null, failedAt = null, nextAt = null, refusals = null, error = null } = outcome as { sentAt?: Date; failedAt?: Date; nextAt?: Date; refusals?: number; error?: string };
   await database().query(
-    `update letters set sent_at = $sentAt, failed_at = $failedAt, next_attempt_at = coalesce($nextAt, next_attempt_at), refusals = coalesce($refusals, refusals), last_error = $error, leased_until = null where id = $id`,
-    { bind: { id, sentAt, failedAt, nextAt, refusals, error } },
+    `update letters set sent_at = $sentAt, failed_at = $failedAt, next_attempt_at = coalesce($nextAt, next_attempt_at), refusals = coalesce($refusals, refusals), last_error = $error, leased_until = null
+     where id = $id and ($sentAt::timestamptz is not null or (attempts = $attempts and sent_at is null))`,
+    { bind: { id, attempts, sentAt, failedAt, nextAt, refusals, error } },
   );
 }
 

@@ -112,9 +112,13 @@ export function claimForOnePerson(now: Date, leaseUntil: Date, most: number): Pr
   );
 }
 
+/** A message as somebody took it. Whoever is late, and finds that another has taken it since, has no more to say of it but that it went. */
+export type Taken = Pick<Claimed, 'id' | 'attempts'>;
+const STILL_TAKEN = 'id = $id and attempts = $attempts and sent_at is null';
+
 /** Gives one back unsent until its time comes. */
-export async function holdBack(id: number, until: Date, by: HeldBy): Promise<void> {
-  await database().query(`update outbox set next_attempt_at = $until, held_by = $by, leased_until = null, attempts = attempts - 1 where id = $id`, { bind: { id, until, by } });
+export async function holdBack({ id, attempts }: Taken, until: Date, by: HeldBy): Promise<void> {
+  await database().query(`update outbox set next_attempt_at = $until, held_by = $by, leased_until = null, attempts = attempts - 1 where ${STILL_TAKEN}`, { bind: { id, attempts, until, by } });
 }
 
 /** Nobody has to hear what was held back about this alert any more; `why` stands beside it. */
@@ -166,17 +170,17 @@ export async function markSent(ids: readonly number[], at: Date): Promise<void> 
   await database().query(`update outbox set sent_at = $at, leased_until = null, last_error = null where id = any($ids::bigint[])`, { bind: { ids, at } });
 }
 
-export async function markForRetry(id: number, { nextAt, refusals, error }: { nextAt: Date; refusals: number; error: string }): Promise<void> {
-  await database().query(`update outbox set next_attempt_at = $nextAt, refusals = $refusals, leased_until = null, last_error = $error where id = $id`, { bind: { id, nextAt, refusals, error } });
+export async function markForRetry({ id, attempts }: Taken, { nextAt, refusals, error }: { nextAt: Date; refusals: number; error: string }): Promise<void> {
+  await database().query(`update outbox set next_attempt_at = $nextAt, refusals = $refusals, leased_until = null, last_error = $error where ${STILL_TAKEN}`, { bind: { id, attempts, nextAt, refusals, error } });
 }
 
-export async function markFailed(id: number, at: Date, error: string): Promise<void> {
-  await database().query(`update outbox set failed_at = $at, leased_until = null, last_error = $error where id = $id`, { bind: { id, at, error } });
+export async function markFailed({ id, attempts }: Taken, at: Date, error: string): Promise<void> {
+  await database().query(`update outbox set failed_at = $at, leased_until = null, last_error = $error where ${STILL_TAKEN}`, { bind: { id, attempts, at, error } });
 }
 
 /** Nothing was sent, and nothing was wrong: nobody is there to send it to. */
-export async function markDropped(id: number, at: Date, why: string): Promise<void> {
-  await database().query(`update outbox set failed_at = $at, dropped_at = $at, leased_until = null, last_error = $why where id = $id`, { bind: { id, at, why } });
+export async function markDropped({ id, attempts }: Taken, at: Date, why: string): Promise<void> {
+  await database().query(`update outbox set failed_at = $at, dropped_at = $at, leased_until = null, last_error = $why where ${STILL_TAKEN}`, { bind: { id, attempts, at, why } });
 }
 
 /** When the next mail is due, ms since 1970; null: none waits. */

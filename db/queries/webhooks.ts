@@ -42,6 +42,7 @@ export function takeDeliveries(limit: number, leaseMs: number): Promise<DueDeliv
 
 export interface Settled {
   id: string;
+  attempts: number;
   payload: object;
   status: number | null;
   error: string | null;
@@ -49,14 +50,14 @@ export interface Settled {
   againInMs: number | null;
 }
 
-export async function settleDelivery({ id, payload, status, error, againInMs }: Settled): Promise<void> {
+export async function settleDelivery({ id, attempts, payload, status, error, againInMs }: Settled): Promise<void> {
   await database().query(
     `update webhook_deliveries set leased_until = null, payload = $payload::jsonb, last_status = $status, last_error = $error,
        delivered_at = case when $error::text is null then now() end,
        failed_at = case when $error::text is not null and $againInMs::float8 is null then now() end,
        next_attempt_at = coalesce(now() + $againInMs::float8 * interval '1 millisecond', next_attempt_at)
-     where id = $id`,
-    { bind: { id, payload: JSON.stringify(payload), status, error, againInMs } },
+     where id = $id and ($error::text is null or (attempts = $attempts and delivered_at is null))`,
+    { bind: { id, attempts, payload: JSON.stringify(payload), status, error, againInMs } },
   );
 }
 

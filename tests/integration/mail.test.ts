@@ -1,5 +1,6 @@
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { Membership, OutboxMail, Person } from '@/db/models';
+import { claimForOnePerson, holdBack, markDropped, markFailed, markForRetry, markSent } from '@/db/queries/outbox';
 import { ManualClock } from '@/lib/clock';
 import { smtpTransport } from '@/lib/mail/smtp';
 import { sendDue } from '@/lib/services/outbox/send';
@@ -64,6 +65,24 @@ describe('the outbox', () => {
     expect(mine?.subject).toContain('3 messages');
     for (const name of ['Perry', 'Medlar wine', 'Crab cider']) expect(mine?.text).toContain(name);
     expect((await rows()).every((row) => row.sentAt)).toBe(true);
+  });
+
+  it('hears nothing more from a sender that is late, but that it went', async () => {
+    await owe(keeper.personId, 'one', clock.now());
+    const claim = () => claimForOnePerson(new Date(clock.now()), new Date(clock.now() + LEASE_MS), 50);
+    const [late] = await claim();
+    clock.advance(LEASE_MS + 1);
+    const [now] = await claim();
+    const lease = { leasedUntil: new Date(clock.now() + LEASE_MS), failedAt: null, sentAt: null, lastError: null };
+    // The other one has it in hand meanwhile: it is neither free nor given up.
+    await markForRetry(late!, { nextAt: new Date(clock.now()), refusals: 1, error: 'late' });
+    await markFailed(late!, new Date(clock.now()), 'late');
+    await markDropped(late!, new Date(clock.now()), 'late');
+    await holdBack(late!, new Date(clock.now()), 'mute');
+    expect(await rows()).toMatchObject([lease]);
+    await markSent([now!.id], new Date(clock.now()));
+    await markFailed(now!, new Date(clock.now()), 'after all');
+    expect(await rows()).toMatchObject([{ sentAt: new Date(clock.now()), failedAt: null }]);
   });
 
   it('keeps the mails about one alert together in the reader', async () => {

@@ -3,6 +3,7 @@ import { createServer, type IncomingMessage, type Server } from 'node:http';
 import type { AddressInfo } from 'node:net';
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { inTransaction } from '@/db/client';
+import { settleDelivery, takeDeliveries } from '@/db/queries/webhooks';
 import { Webhook, WebhookDelivery } from '@/db/models';
 import { batchState } from '@/db/queries/batch-states';
 import type { AssessmentBody } from '@/lib/contracts/assessment';
@@ -104,6 +105,20 @@ describe('a webhook', () => {
     expect(await deliver()).toBe(1);
     await changed(keeper.cellarId, 'batch', batch.id);
     expect(await deliver()).toBe(1);
+  });
+
+  it('that was delivered stays so, whatever a sender says that had it before and is late', async () => {
+    const keeper = await buildMember('keeper');
+    const { id } = await createWebhook(keeper, form());
+    await changed(keeper.cellarId, 'batch', null);
+    const [late] = await takeDeliveries(1, 0);
+    const [now] = await takeDeliveries(1, 60_000);
+    const { payload } = now!;
+    await settleDelivery({ ...late!, payload, status: null, error: 'it did not answer in time', againInMs: 0 });
+    expect(await deliver()).toBe(0);
+    await settleDelivery({ ...now!, payload, status: 200, error: null, againInMs: null });
+    await settleDelivery({ ...late!, payload, status: null, error: 'it did not answer in time', againInMs: null });
+    expect((await listDeliveries(keeper, id)).items).toMatchObject([{ state: 'delivered', status: 200 }]);
   });
 
   it('is tried again with growing pauses, the same body signed anew, and given up after a day', async () => {

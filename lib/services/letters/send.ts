@@ -34,12 +34,12 @@ export async function sendLetters(deps: Pick<SendDeps, 'transport' | 'clock' | '
       const { kind, message } = asFailure(error);
       const refusals = row.refusals + (kind === 'refused' ? 1 : 0);
       const at = nextTry(kind, kind === 'refused' ? refusals : row.attempts, row.createdAt.getTime(), clock.now(), (deps.random ?? Math.random)());
-      await markLetter(row.id, at === null ? { failedAt: new Date(clock.now()), error: message } : { nextAt: new Date(at), refusals, error: message });
+      await markLetter(row, at === null ? { failedAt: new Date(clock.now()), error: message } : { nextAt: new Date(at), refusals, error: message });
       log.warn({ letter: row.id, attempts: row.attempts, kind, error: message }, at === null ? 'a letter is given up' : 'a letter has to wait');
       if (kind === 'unavailable') return { mails, unavailable: true };
       continue;
     }
-    await markLetter(row.id, { sentAt: new Date(clock.now()) });
+    await markLetter(row, { sentAt: new Date(clock.now()) });
     mails += 1;
   }
   return { mails, unavailable: false };
@@ -49,6 +49,6 @@ export async function sendLetters(deps: Pick<SendDeps, 'transport' | 'clock' | '
 async function stillOfUse(row: ClaimedLetter, now: number): Promise<LetterPayload | null> {
   const parsed = letterPayload.safeParse(row.payload);
   if (parsed.success && (await letterWanted(parsed.data, now))) return parsed.data;
-  await markLetter(row.id, { failedAt: new Date(now), error: parsed.success ? 'no longer of use' : 'the letter cannot be made' });
+  await markLetter(row, { failedAt: new Date(now), error: parsed.success ? 'no longer of use' : 'the letter cannot be made' });
   return null;
 }

@@ -69,7 +69,7 @@ async function sendToOne(ready: readonly Ready[], means: Means | undefined, deps
     await means.send(ready);
   } catch (error) {
     if (error instanceof NobodyThere) {
-      for (const id of ids) await markDropped(id, new Date(clock.now()), error.message);
+      for (const { row } of ready) await markDropped(row, new Date(clock.now()), error.message);
       return 'kept';
     }
     const { kind, message } = asFailure(error);
@@ -87,12 +87,12 @@ async function sendable(claimed: readonly Claimed[], clock: Clock): Promise<Read
     const parsed = mailPayload.safeParse(row.payload);
     const reason = !row.stillThere ? 'no longer told of alerts in this cellar' : parsed.success ? null : 'the mail cannot be made';
     if (!parsed.success || reason !== null) {
-      await markFailed(row.id, new Date(clock.now()), reason ?? '');
+      await markFailed(row, new Date(clock.now()), reason ?? '');
       log.warn({ outbox: row.id, reason }, 'a message is not sent');
       continue;
     }
     const hold = heldBack(row, parsed.data, clock.now());
-    if (hold) await holdBack(row.id, new Date(hold.until), hold.by);
+    if (hold) await holdBack(row, new Date(hold.until), hold.by);
     else ready.push({ row, payload: parsed.data });
   }
   return ready;
@@ -112,8 +112,8 @@ async function giveBack(ready: readonly Ready[], kind: ReturnType<typeof asFailu
     // A server that was long away and then says no once has said no once.
     const tries = kind === 'refused' ? refusals : row.attempts;
     const at = nextTry(kind, tries, row.createdAt.getTime(), now, random());
-    if (at === null) await markFailed(row.id, new Date(now), message);
-    else await markForRetry(row.id, { nextAt: new Date(at), refusals, error: message });
+    if (at === null) await markFailed(row, new Date(now), message);
+    else await markForRetry(row, { nextAt: new Date(at), refusals, error: message });
     log.warn({ outbox: row.id, means: row.means, attempts: row.attempts, kind, error: message, next: at === null ? null : new Date(at).toISOString() }, at === null ? 'a message is given up' : 'a message has to wait');
   }
 }

@@ -48,7 +48,7 @@ async function deliver(delivery: DueDelivery, allowPrivate: boolean, now: number
     error = sentence(thrown);
   }
   const againInMs = error === null ? null : (AGAIN_AFTER_MS[delivery.attempts - 1] ?? null);
-  await settleDelivery({ id: delivery.id, payload, status, error, againInMs });
+  await settleDelivery({ id: delivery.id, attempts: delivery.attempts, payload, status, error, againInMs });
   await (error === null ? noteArrival(delivery.webhookId) : noteFailure(delivery.webhookId, againInMs === null, now));
 }
 
