@@ -15,12 +15,14 @@ import { State } from '@/components/ui/StateMark';
 import { acknowledgeAlert, resolveAlert } from '@/lib/client/alerts';
 import { ClientError } from '@/lib/client/fetcher';
 import type { AlertBody } from '@/lib/contracts/alerts';
-import { alertFate, alertState, goneSentence, lookAgainTimes, standsSince, toldLines } from './rows';
+import { alertFate, alertState, goneSentence, lookAgainTimes, standsSince, toldLines, type Rest } from './rows';
 
 interface AlertDetailProps {
   alert: AlertBody;
   now: number;
   timeZone: string;
+  /** When the reader is not to be woken. */
+  rest: Rest | null;
   mayTake: boolean;
   mayClear: boolean;
   /** The person came to take it: the cursor goes to when they look again. */
@@ -47,8 +49,9 @@ function ToldMark({ state }: { state: AlertBody['told'][number]['state'] }) {
   );
 }
 
-function TakeForm({ alert, now, timeZone, mayTake, mayClear, taking }: Omit<AlertDetailProps, 'onBack'>) {
-  const times = lookAgainTimes(now, timeZone);
+function TakeForm({ alert, now, timeZone, rest, mayTake, mayClear, taking }: Omit<AlertDetailProps, 'onBack'>) {
+  // What can hurt someone wakes them anyway, and is looked at as soon as it should be.
+  const times = lookAgainTimes(now, timeZone, alert.level === 'act' ? null : rest);
   const [note, setNote] = useState('');
   const [look, setLook] = useState('0');
   const [failed, setFailed] = useState<string | null>(null);
@@ -96,7 +99,7 @@ function TakeForm({ alert, now, timeZone, mayTake, mayClear, taking }: Omit<Aler
 }
 
 /** What is wrong, its number, what to do, who was told; and to say that one has it. */
-export function AlertDetail({ alert, now, timeZone, mayTake, mayClear, taking, onBack }: AlertDetailProps) {
+export function AlertDetail({ alert, now, timeZone, rest, mayTake, mayClear, taking, onBack }: AlertDetailProps) {
   const { state, word } = alertState(alert);
   const call = alert.evidence;
   const ruler = rulerOf(alert.call, call, null);
@@ -161,7 +164,7 @@ export function AlertDetail({ alert, now, timeZone, mayTake, mayClear, taking, o
         )}
       </Part>
       {alert.state !== 'resolved' && <BatchMute batch={alert.batch} now={now} timeZone={timeZone} />}
-      {alert.state !== 'resolved' && (mayTake || mayClear) && <TakeForm key={alert.id} alert={alert} now={now} timeZone={timeZone} mayTake={mayTake} mayClear={mayClear} taking={taking} />}
+      {alert.state !== 'resolved' && (mayTake || mayClear) && <TakeForm key={alert.id} alert={alert} now={now} timeZone={timeZone} rest={rest} mayTake={mayTake} mayClear={mayClear} taking={taking} />}
       <Link href={`/batches/${alert.batch.id}`} className="type-label min-h-8 text-ink underline decoration-rule2 underline-offset-4">
         To {alert.batch.name}, its curve and its log
       </Link>

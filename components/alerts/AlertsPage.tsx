@@ -14,6 +14,7 @@ import { ClientError } from '@/lib/client/fetcher';
 import { useMe } from '@/lib/client/me';
 import { useMessages } from '@/lib/client/messages';
 import type { AlertBody } from '@/lib/contracts/alerts';
+import type { MessagesBody } from '@/lib/contracts/messages';
 import { clockOf } from '@/components/messages/words';
 import { AlertDetail } from './AlertDetail';
 import { AlertRow } from './AlertRow';
@@ -32,8 +33,7 @@ const CLEARED_FIRST = 8;
 const STEP = 40;
 
 /** Why an alert of the night may be told in the morning. */
-function QuietHours() {
-  const { messages } = useMessages();
+function QuietHours({ messages }: { messages: MessagesBody | undefined }) {
   if (!messages?.quiet) return null;
   return (
     <p className="type-label ml-auto text-ink2 max-strip:w-full">
@@ -47,6 +47,7 @@ function QuietHours() {
 export function AlertsPage() {
   const { me, may, error: meError, retry: retryMe } = useMe();
   const timeZone = me?.cellar.time_zone ?? 'UTC';
+  const { messages } = useMessages();
   const nowMs = useNow();
   const asked = useSearchParams().get('alert');
   const [tab, setTab] = useState<Tab>('all');
@@ -83,6 +84,7 @@ export function AlertsPage() {
   if (!open.alerts || !acknowledged.alerts || !resolved.alerts || nowMs === null || !me) return <Haze height={420} label="Loading the alerts" className="m-(--margin)" />;
 
   const now = nowMs / 1000;
+  const rest = messages?.quiet ? { quiet: { fromMin: messages.quiet.from, toMin: messages.quiet.to }, timeZone: messages.time_zone } : null;
   const counts = open.counts;
   const shown = { open: byNeed(open.alerts), acknowledged: acknowledged.alerts, resolved: resolved.alerts };
   const everything = [...shown.open, ...shown.acknowledged, ...shown.resolved];
@@ -117,7 +119,7 @@ export function AlertsPage() {
               { value: 'resolved', name: 'Cleared', count: counts?.resolved },
             ]}
           />
-          <QuietHours />
+          <QuietHours messages={messages} />
         </div>
         {failed && <FormError>{failed}</FormError>}
         {everything.length === 0 && (
@@ -166,7 +168,7 @@ export function AlertsPage() {
       {beside && (
         <div className={`wide:border-l-[1.5px] wide:border-ink wide:bg-lit ${chosen ? '' : 'max-wide:hidden'}`}>
           <div className="wide:sticky wide:top-0">
-            <AlertDetail key={beside.id} alert={beside} now={now} timeZone={timeZone} mayTake={may('alerts.acknowledge')} mayClear={may('alerts.resolve')} taking={taking === beside.id} onBack={() => choose(null)} />
+            <AlertDetail key={beside.id} alert={beside} now={now} timeZone={timeZone} rest={rest} mayTake={may('alerts.acknowledge')} mayClear={may('alerts.resolve')} taking={taking === beside.id} onBack={() => choose(null)} />
           </div>
         </div>
       )}

@@ -1,5 +1,6 @@
 import type { AlertBody } from '@/lib/contracts/alerts';
 import { STATE_WORDS, type StateWord } from '@/lib/core/calls/attention';
+import { quietUntil, type QuietHours } from '@/lib/core/alerts/telling';
 import { clock, dayName, duration, instantOf, wallTime, when } from '@/components/charts/zone';
 import type { VesselState } from '@/components/vessel/describe';
 
@@ -119,6 +120,13 @@ export function toldLines(alert: Pick<AlertBody, 'told'>, now: number, timeZone:
   return [...alert.told].sort((a, b) => rank(a) - rank(b) || time(a) - time(b)).map((one) => toldLine(one, now, timeZone));
 }
 
+/** When a person is not to be woken. */
+export interface Rest {
+  quiet: QuietHours;
+  /** The clock the hours are meant by, their own. */
+  timeZone: string;
+}
+
 export interface LookAgain {
   /** Seconds since 1970. */
   at: number;
@@ -126,16 +134,25 @@ export interface LookAgain {
   words: string;
 }
 
-/** Times worth offering for the next look: in two hours, this evening, tomorrow morning and evening. */
-export function lookAgainTimes(now: number, timeZone: string): LookAgain[] {
+/**
+ * Times worth offering for the next look: in two hours, this morning or
+ * evening, tomorrow. It rings at the hour that was chosen, so none lies in the
+ * reader's quiet hours; what would comes when they are over.
+ * @param rest the quiet hours and the clock they go by; null: none hold
+ */
+export function lookAgainTimes(now: number, timeZone: string, rest: Rest | null): LookAgain[] {
   const today = wallTime(now, timeZone);
   const on = (days: number, hour: number) => {
     const date = new Date(Date.UTC(today.year, today.month - 1, today.day + days));
     return instantOf({ year: date.getUTCFullYear(), month: date.getUTCMonth() + 1, day: date.getUTCDate(), hour }, timeZone);
   };
   const half = 1800;
-  const soon = Math.ceil((now + 2 * 3600) / half) * half;
-  const fixed = [on(0, 18), on(0, 21), on(1, 9), on(1, 18)].filter((at) => at > now + 3600 && Math.abs(at - soon) > half);
+  const awake = (at: number) => {
+    const until = rest && quietUntil(rest.quiet, rest.timeZone, at * 1000);
+    return until === null ? at : until / 1000;
+  };
+  const soon = awake(Math.ceil((now + 2 * 3600) / half) * half);
+  const fixed = [on(0, 9), on(0, 18), on(0, 21), on(1, 9), on(1, 18)].filter((at) => at > now + 3600 && Math.abs(at - soon) > half && awake(at) === at);
   const tomorrow = on(1, 0);
   return [soon, ...fixed]
     .sort((a, b) => a - b)

@@ -83,7 +83,7 @@ describe('when to look again', () => {
   it('offers times ahead, in order, the first in about two hours', () => {
     for (let hour = 0; hour < 24; hour++) {
       const now = NOW + hour * 3600;
-      const times = lookAgainTimes(now, 'Europe/Prague');
+      const times = lookAgainTimes(now, 'Europe/Prague', null);
       expect(times.length).toBeGreaterThanOrEqual(2);
       times.forEach((time, index) => {
         expect(time.at).toBeGreaterThan(now + 3600);
@@ -92,7 +92,15 @@ describe('when to look again', () => {
     }
   });
 
+  it('wakes nobody in their quiet hours: what falls into them is offered at their end, by their own clock', () => {
+    const words = (at: string, timeZone: string) => lookAgainTimes(Date.parse(at) / 1000, 'UTC', { quiet: { fromMin: 22 * 60, toMin: 390 }, timeZone }).map((time) => time.words);
+    expect(words('2026-12-03T21:40:00Z', 'UTC')).toEqual(['tomorrow 06:30', 'tomorrow 09:00', 'tomorrow 18:00']);
+    expect(words('2026-12-03T00:23:00Z', 'UTC')).toEqual(['06:30', '09:00', '18:00', '21:00']);
+    expect(words('2026-12-03T17:20:00Z', 'Europe/Prague')).toEqual(['19:30', 'tomorrow 09:00', 'tomorrow 18:00']);
+    expect(words('2026-12-03T18:50:00Z', 'Europe/Prague')[0]).toBe('tomorrow 05:30');
+  });
+
   it('names tomorrow as such', () => {
-    expect(lookAgainTimes(NOW, 'UTC').map((time) => time.words)).toEqual(['17:00', '18:00', '21:00', 'tomorrow 09:00']);
+    expect(lookAgainTimes(NOW, 'UTC', null).map((time) => time.words)).toEqual(['17:00', '18:00', '21:00', 'tomorrow 09:00']);
   });
 });
