@@ -103,7 +103,7 @@ export function BookPage() {
         )}
       </PageHead>
       {!bare && (
-        <div className="flex flex-wrap items-end gap-x-4 gap-y-3 border-b bg-desk px-(--margin) py-3">
+        <div className="not-printed flex flex-wrap items-end gap-x-4 gap-y-3 border-b bg-desk px-(--margin) py-3">
           <Field label="look for" type="search" value={words} onChange={(event) => setWords(event.target.value)} className="w-56 max-strip:w-full" />
           <Select label="kind" value={kind} onChange={(event) => setKind(event.target.value as DrinkKind | '')} className="w-44 max-strip:w-[calc(50%-0.5rem)]">
             <option value="">every kind</option>

@@ -57,7 +57,7 @@ export function Places({ mayManage }: { mayManage: boolean }) {
                 <span className="type-name-low min-w-40 break-words">{place.name}</span>
                 <Standing place={place} />
                 {mayManage && (
-                  <span className="ml-auto flex gap-4">
+                  <span className="not-printed ml-auto flex gap-4">
                     <button type="button" aria-label={`Change ${place.name}`} onClick={() => setChanged(place.id)} className={LINK}>
                       Change
                     </button>
@@ -75,7 +75,7 @@ export function Places({ mayManage }: { mayManage: boolean }) {
       </ul>
       {failed && <FormError>{failed}</FormError>}
       {mayManage && (
-        <div className="border-b">
+        <div className="not-printed border-b">
           <PlaceForm place={null} onSend={createPlace} />
         </div>
       )}

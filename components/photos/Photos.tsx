@@ -48,7 +48,7 @@ export function AddPhoto({ place, on, own: byOwner = true }: PhotosProps) {
 
   return (
     <>
-      <label htmlFor={id} className="type-tick relative inline-flex min-h-6 cursor-pointer items-center whitespace-nowrap text-ink3 underline decoration-rule2 underline-offset-2 hover:text-ink max-strip:min-h-11">
+      <label htmlFor={id} className="not-printed type-tick relative inline-flex min-h-6 cursor-pointer items-center whitespace-nowrap text-ink3 underline decoration-rule2 underline-offset-2 hover:text-ink max-strip:min-h-11">
         <input ref={input} id={id} type="file" accept="image/jpeg,image/png,image/webp,image/avif" multiple disabled={state === 'sending'} className="absolute inset-0 cursor-pointer opacity-0" onChange={(event) => void send(event.target.files)} />
         {state === 'sending' ? 'keeping the photo' : photos?.some((photo) => hangsOn(photo, on)) ? 'add another photo' : 'add a photo'}
       </label>
