@@ -40,7 +40,7 @@ export function SharedPage({ token }: { token: string }) {
       </header>
       <main>
         {gone ? (
-          <ErrorState title="This link no longer opens anything">It was revoked, or its time is over. Ask whoever gave it to you for another.</ErrorState>
+          <ErrorState title="This link no longer opens anything">It was revoked, its time is over, or a piece of its address is missing. Ask whoever gave it to you for another.</ErrorState>
         ) : error && !shared ? (
           <ErrorState title="The page did not load" onRetry={retry}>
             {error.message}
