@@ -109,7 +109,7 @@ export function Placement({ sensor, mayAssign, timeZone, now }: { sensor: Sensor
             value={chosen}
             onChange={(event) => setChosen(event.target.value)}
             className="min-w-48 flex-1"
-            hint={taken ? `${taken.name} is in it now` : sensor.kind === 'float' ? 'one float a batch' : sensor.kind === 'room' ? 'for one vessel’s own air: a cupboard, a water bath' : 'looks into its neck'}
+            hint={taken ? `${taken.name} is in it and comes out` : sensor.kind === 'float' ? 'one float a batch' : sensor.kind === 'room' ? 'for one vessel’s own air: a cupboard, a water bath' : 'looks into its neck'}
           >
             <option value="">choose a batch</option>
             {others.map((batch) => (

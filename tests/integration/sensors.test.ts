@@ -193,6 +193,18 @@ describe('where a sensor was', () => {
     ]);
   });
 
+  it('leaves the float that gives way in its batch until the other one comes', async () => {
+    const brewer = await buildMember('brewer');
+    const [elsewhere, batch] = [await buildBatch({ cellarId: brewer.cellarId }), await buildBatch({ cellarId: brewer.cellarId })];
+    const { sensor: here } = await buildSensor({ batch, fromAt: new Date(NOW - 5 * DAY) });
+    const { sensor: comes } = await buildSensor({ batch: elsewhere, fromAt: new Date(NOW - 4 * DAY) });
+    await updateSensor(brewer, comes.identifier, { batch_id: null, since: iso(NOW - DAY) }, clock);
+    // It was elsewhere until a day ago, so it comes no sooner.
+    await updateSensor(brewer, comes.identifier, { batch_id: batch.id, since: iso(NOW - 3 * DAY) }, clock);
+    expect((await listStays(brewer, comes.identifier)).items[0]).toMatchObject({ batch: { id: batch.id }, from: iso(NOW - DAY), to: null });
+    expect((await listStays(brewer, here.identifier)).items).toMatchObject([{ batch: { id: batch.id }, from: iso(NOW - 5 * DAY), to: iso(NOW - DAY) }]);
+  });
+
   it('is one batch at a time, whatever is asked at once', async () => {
     const brewer = await buildMember('brewer');
     const batches = await Promise.all(Array.from({ length: 4 }, () => buildBatch({ cellarId: brewer.cellarId })));

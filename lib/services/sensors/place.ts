@@ -45,9 +45,10 @@ export async function placeSensor(sensor: Sensor, batchId: string, at: Date, tra
     const last = await ProbeAssignment.findOne(after);
     await ProbeAssignment.create({ ...stay, fromAt: last?.toAt ?? at }, { transaction });
   } else {
-    await end(await Assignment.findAll(openStays({ batchId }, transaction)), at, transaction);
-    const last = await Assignment.findOne(after);
-    await Assignment.create({ ...stay, fromAt: last?.toAt ?? at }, { transaction });
+    const fromAt = (await Assignment.findOne(after))?.toAt ?? at;
+    // The other float leaves when this one comes: nothing is measured by neither.
+    await end(await Assignment.findAll(openStays({ batchId }, transaction)), fromAt, transaction);
+    await Assignment.create({ ...stay, fromAt }, { transaction });
   }
   return [...new Set([...left, batchId])];
 }
