@@ -6,7 +6,9 @@ import { wholeSpan, type Span } from '@/components/charts/picture';
 import { isWhole, within } from '@/components/charts/zoom';
 import { clock, when } from '@/components/charts/zone';
 import { LinkButton } from '@/components/ui/Button';
+import { dayWords } from '@/components/book/words';
 import { MuteBar } from '@/components/messages/BatchMute';
+import { Shares } from '@/components/share/Shares';
 import { Haze } from '@/components/ui/Haze';
 import { usePageLayout } from '@/components/ui/layout';
 import { ErrorState } from '@/components/ui/Notice';
@@ -169,6 +171,7 @@ function Loaded({ batch }: { batch: BatchBody }) {
             <p className="type-body px-(--margin) py-3 text-ink2">Not judged yet. {batch.pitched_at === null ? 'Log the pitch; the calls follow.' : `It is ${STAGE_WORDS.unknown} how it goes until the first readings are in.`}</p>
           )}
           {working && <MuteBar batch={batch} now={now} timeZone={timeZone} />}
+          {may('shares.manage') && <Shares batchId={batch.id} day={(at) => dayWords(at, timeZone, now)} folded />}
         </div>
         <div className="wide:col-start-1 wide:row-start-2">
           <Log batchId={batch.id} rows={entries ? log : null} now={now} timeZone={timeZone} onWrite={may('entries.create') ? () => open('observation') : null} onCorrect={(entry) => setOpened({ form: 'entry', kind: entry.kind as EntryKind, entry })} />

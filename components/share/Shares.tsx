@@ -11,9 +11,17 @@ import { ClientError } from '@/lib/client/fetcher';
 import { createShare, revokeShare, useShares } from '@/lib/client/tastings';
 import { lookedWords } from './words';
 
+interface SharesProps {
+  batchId: string;
+  day: (at: string) => string;
+  /** What a new link is asked for stands behind a button. */
+  folded?: boolean;
+}
+
 /** The share links of a batch: made, copied, revoked. Whoever has the address can look. */
-export function Shares({ batchId, day }: { batchId: string; day: (at: string) => string }) {
+export function Shares({ batchId, day, folded = false }: SharesProps) {
   const { shares, error } = useShares(batchId);
+  const [asking, setAsking] = useState(!folded);
   const [days, setDays] = useState('365');
   const [people, setPeople] = useState(false);
   const [tastings, setTastings] = useState(true);
@@ -30,7 +38,7 @@ export function Shares({ batchId, day }: { batchId: string; day: (at: string) =>
     }
   }
   return (
-    <section aria-label="Share links">
+    <section aria-label="Share links" className="not-printed">
       <GroupBar word="Share links" note="one batch, to look at only" />
       {error && !shares && <p className="type-body px-(--margin) py-2 text-ink2">The links did not load. {error.message}</p>}
       <ul>
@@ -61,19 +69,25 @@ export function Shares({ batchId, day }: { batchId: string; day: (at: string) =>
           </li>
         ))}
       </ul>
-      <div className="flex flex-col gap-2 border-b px-(--margin) py-3">
-        <Field label="open for" unit="days" inputMode="numeric" value={days} onChange={(event) => setDays(event.target.value)} className="w-40" />
-        <Box ticked={tastings} onTick={setTastings}>
-          <span className="type-body">Guests may write tasting notes.</span>
-        </Box>
-        <Box ticked={people} onTick={setPeople}>
-          <span className="type-body">Show my name, and those of tasters who chose it.</span>
-        </Box>
-        {failed && <FormError>{failed}</FormError>}
-        <Button className="self-start" onClick={() => void attempt(() => createShare(batchId, { expires_in_days: typedNumber(days) ?? Number.NaN, show_people: people, takes_tastings: tastings }))}>
-          Make a link
-        </Button>
-      </div>
+      {asking ? (
+        <div className="flex flex-col gap-2 border-b px-(--margin) py-3">
+          <Field label="open for" unit="days" inputMode="numeric" value={days} onChange={(event) => setDays(event.target.value)} className="w-40" />
+          <Box ticked={tastings} onTick={setTastings}>
+            <span className="type-body">Guests may write tasting notes.</span>
+          </Box>
+          <Box ticked={people} onTick={setPeople}>
+            <span className="type-body">Show my name, and those of tasters who chose it.</span>
+          </Box>
+          {failed && <FormError>{failed}</FormError>}
+          <Button className="self-start" onClick={() => void attempt(() => createShare(batchId, { expires_in_days: typedNumber(days) ?? Number.NaN, show_people: people, takes_tastings: tastings }))}>
+            Make a link
+          </Button>
+        </div>
+      ) : (
+        <div className="border-b px-(--margin) py-3">
+          <Button onClick={() => setAsking(true)}>Share it by a link</Button>
+        </div>
+      )}
     </section>
   );
 }
