@@ -100,6 +100,11 @@ export function SensorPage({ id, doors }: { id: string; doors: Doors }) {
           <Stays id={id} timeZone={timeZone} />
           <RefusedReasons id={id} />
           <Refusals sensorId={id} now={now} timeZone={timeZone} />
+          <GroupBar word="How it reaches this house" />
+          <div className="px-(--margin) py-4">
+            <p className="type-body pb-4 text-ink2">Its secret was shown once and is not kept; put it where the lines say SECRET.</p>
+            <ConnectLines sensor={sensor.id} secret={null} doors={doors} kind={sensor.kind} />
+          </div>
         </div>
         <div className="max-wide:order-1 wide:border-l">
           <GroupBar word="Health" />
@@ -124,11 +129,6 @@ export function SensorPage({ id, doors }: { id: string; doors: Doors }) {
               <Credential sensor={sensor} onNewSecret={(made) => setRenewed({ sensor: made, at: nowMs ?? 0 })} />
             </>
           )}
-          <GroupBar word="How it reaches this house" />
-          <div className="px-(--margin) py-4">
-            <p className="type-body pb-4 text-ink2">Its secret was shown once and is not kept; put it where the lines say SECRET.</p>
-            <ConnectLines sensor={sensor.id} secret={null} doors={doors} kind={sensor.kind} />
-          </div>
         </div>
       </div>
     </>

@@ -48,7 +48,7 @@ function JobTime({ row, children }: { row: TodayJob; children?: React.ReactNode 
 function JobName({ row, done }: { row: TodayJob; done: boolean }) {
   const { job } = row;
   return (
-    <Link href={job.batch ? `/batches/${job.batch.id}` : '/rounds'} className={`two-lines py-px text-[0.96875rem]/[1.3125rem] font-[480] no-underline hover:underline wide:block wide:truncate ${done ? 'text-ink2 line-through' : 'text-ink'}`} title={job.title}>
+    <Link href={job.batch ? `/batches/${job.batch.id}` : '/rounds'} className={`two-lines py-px text-[0.96875rem]/[1.3125rem] font-[480] no-underline hover:underline ${done ? 'text-ink2 line-through' : 'text-ink'}`} title={job.title}>
       {job.title}
     </Link>
   );
