@@ -9,18 +9,17 @@ import { fallOf } from './fall';
 const HEIGHT = 220;
 const [TOP, FOOT] = [22, 26];
 
-/** The fall of the batch in its drink's colour, from the original gravity to where it ended. */
+/** The fall of the batch in its drink's colour, from the original gravity to where it is, or ended. */
 export function FallPicture({ shared, now }: { shared: SharedBatch; now: number }) {
   const frame = useRef<HTMLDivElement>(null);
   const width = Math.max(220, useWidth(frame, 720));
-  const { line, read } = fallOf(shared, now);
+  const { line, read, floor } = fallOf(shared, now);
   const [first, last] = [line[0], line.at(-1)];
-  if (!first || !last || last.at <= first.at) return null;
+  if (!first || !last || floor === null || last.at <= first.at) return null;
   const gravities = line.map((point) => point.gravity);
   const high = Math.max(...gravities, shared.original_gravity ?? 0);
-  const low = Math.min(...gravities);
   const x = (at: number) => ((at - first.at) / (last.at - first.at)) * (width - 2) + 1;
-  const y = (gravity: number) => TOP + (HEIGHT - TOP - FOOT) * ((high - gravity) / (high - low || 0.001));
+  const y = (gravity: number) => TOP + (HEIGHT - TOP - FOOT) * ((high - gravity) / (high - floor || 0.001));
   const path = line.map((point, index) => `${index === 0 ? 'M' : 'L'}${x(point.at).toFixed(1)} ${y(point.gravity).toFixed(1)}`).join('');
   const bed = HEIGHT - FOOT;
   const day = (at: number) => dayName(at, 'UTC').split(' ').slice(1).join(' ');

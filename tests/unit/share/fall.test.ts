@@ -32,6 +32,16 @@ describe('the fall on a shared page', () => {
     expect(fallOf({ ...shared, ended_at: iso(pitched + 30 * DAY) }, NOW).line.at(-1)!.at).toBeLessThanOrEqual(pitched + 30 * DAY);
   });
 
+  it('goes down to where the curve will end while it works, and to its own end once it has ended', () => {
+    const working = { ...shared, curve: shared.curve.map((point, day) => ({ ...point, gravity: 1.05 - 0.002 * day })) };
+    const lowest = (until: number) => Math.min(...working.curve.filter((point) => Date.parse(point.at) <= until * 1000).map((point) => point.gravity));
+    const { line, floor } = fallOf(working, NOW);
+    expect(floor).toBe(lowest(Infinity));
+    expect(line.at(-1)!.gravity).toBeGreaterThan(floor!);
+    const ended = pitched + 30 * DAY;
+    expect(fallOf({ ...working, series: { ...shared.series, count: 0, at: [], gravity: [], temperature: [] }, ended_at: iso(ended) }, NOW).floor).toBe(lowest(ended));
+  });
+
   it('is told by the readings where nothing was fitted, and by the hand where nothing was sent', () => {
     expect(fallOf({ ...shared, curve: [] }, NOW).line).toHaveLength(960);
     expect(fallOf({ ...shared, curve: [], series: { ...shared.series, count: 0, at: [], gravity: [], temperature: [] } }, NOW).line).toHaveLength(1);
