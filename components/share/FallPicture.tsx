@@ -8,6 +8,8 @@ import { fallOf } from './fall';
 
 const HEIGHT = 220;
 const [TOP, FOOT] = [22, 26];
+/** Width of a gravity in the picture's letters. */
+const FIGURE = 48;
 
 /** The fall of the batch in its drink's colour, from the original gravity to where it is, or ended. */
 export function FallPicture({ shared, now }: { shared: SharedBatch; now: number }) {
@@ -22,6 +24,8 @@ export function FallPicture({ shared, now }: { shared: SharedBatch; now: number 
   const y = (gravity: number) => TOP + (HEIGHT - TOP - FOOT) * ((high - gravity) / (high - floor || 0.001));
   const path = line.map((point, index) => `${index === 0 ? 'M' : 'L'}${x(point.at).toFixed(1)} ${y(point.gravity).toFixed(1)}`).join('');
   const bed = HEIGHT - FOOT;
+  // A fall that is steep to its end would cross its own figure.
+  const overEnd = Math.min(...line.filter((point) => x(point.at) >= width - FIGURE).map((point) => y(point.gravity)));
   const day = (at: number) => dayName(at, 'UTC').split(' ').slice(1).join(' ');
   return (
     <div ref={frame} className="min-w-0 font-mono">
@@ -35,7 +39,7 @@ export function FallPicture({ shared, now }: { shared: SharedBatch; now: number 
         <text x="2" y="14" fontSize="13" fontWeight="600" fill="var(--ink)">
           {high.toFixed(3)}
         </text>
-        <text x={width - 2} y={Math.max(14, y(last.gravity) - 10)} textAnchor="end" fontSize="13" fontWeight="600" fill="var(--ink)">
+        <text x={width - 2} y={Math.max(14, overEnd - 8)} textAnchor="end" fontSize="13" fontWeight="600" fill="var(--ink)">
           {last.gravity.toFixed(3)}
         </text>
         <text x="2" y={HEIGHT - 8} fontSize="12" fill="var(--ink2)">
