@@ -61,20 +61,21 @@ describe('signing in', () => {
   });
 
   it('takes as long for an unknown account as for a wrong password', async () => {
-    const { person } = await member();
     const time = async (email: string) => {
       const began = performance.now();
       await signInOverHttp(web, { email, password: 'wrong' }, from());
       return performance.now() - began;
     };
+    const least = (times: number[]) => Math.min(...times);
     const known: number[] = [];
     const unknown: number[] = [];
-    for (let round = 0; round < 5; round += 1) {
+    // The hash alone takes some 20 ms; an answer without it would be far below half, however often it is asked. A busy machine only needs more rounds.
+    const alike = () => least(unknown) > least(known) * 0.5 && least(known) > least(unknown) * 0.5;
+    for (let round = 0; round < 30 && (round < 5 || !alike()); round += 1) {
+      const { person } = await member();
       known.push(await time(person.email));
       unknown.push(await time(`nobody${round}@cellar.example`));
     }
-    const least = (times: number[]) => Math.min(...times);
-    // The hash alone takes some 20 ms; an answer without it would be far below half.
     expect(least(unknown)).toBeGreaterThan(least(known) * 0.5);
     expect(least(known)).toBeGreaterThan(least(unknown) * 0.5);
   });
