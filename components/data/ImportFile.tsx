@@ -6,6 +6,8 @@ import { Choice } from '@/components/ui/Choice';
 import { Select } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
 import { GroupBar } from '@/components/ui/Page';
+import { Sentence } from '@/components/ui/Sentence';
+import { State } from '@/components/ui/StateMark';
 import { useAct } from '@/components/ui/use-act';
 import { ARCHIVE_LIMIT_BYTES, IMPORT_LIMIT_BYTES, type ImportPreviewBody } from '@/lib/contracts/imports';
 import { useBatches } from '@/lib/client/batches';
@@ -30,10 +32,11 @@ type Looked = { file: { file_name: string; text: string }; preview: ImportPrevie
 /** What the server is asked with; the answer's choices unless a person chose otherwise. */
 const choicesOf = ({ columns, gravity_unit, temperature_unit, time_zone, date_order }: ImportPreviewBody): Chosen => ({ columns, gravity_unit, temperature_unit, time_zone, date_order });
 
-function formOf(kind: Kind, file: Looked['file'], chosen: Chosen | null): Record<string, unknown> {
-  if (kind === 'archive' || !chosen) return { kind, ...file };
+function formOf(kind: Kind, file: Looked['file'], chosen: Chosen | null, batch: string): Record<string, unknown> {
+  const into = kind === 'readings' && batch !== '' ? { batch_id: batch } : {};
+  if (kind === 'archive' || !chosen) return { kind, ...file, ...into };
   const { columns, time_zone, date_order } = chosen;
-  return { kind, ...file, columns, time_zone, date_order, ...(kind === 'readings' && { gravity_unit: chosen.gravity_unit ?? undefined, temperature_unit: chosen.temperature_unit ?? undefined }) };
+  return { kind, ...file, ...into, columns, time_zone, date_order, ...(kind === 'readings' && { gravity_unit: chosen.gravity_unit ?? undefined, temperature_unit: chosen.temperature_unit ?? undefined }) };
 }
 
 /** Choose a file, look at what it would bring, set it right, keep it. */
@@ -52,14 +55,14 @@ export function ImportFile() {
   // Of two looks at a file the later one counts, whichever is answered first.
   const looks = useRef(0);
 
-  const look = (file: Looked['file'], chosen: Chosen | null, as = kind) =>
+  const look = (file: Looked['file'], chosen: Chosen | null, as = kind, into = batch) =>
     act(async () => {
       looks.current += 1;
       const mine = looks.current;
       // What is chosen stands at once: the next choice, made before the answer, goes beside it.
-      if (chosen) setLooked((before) => before && { file, preview: { ...before.preview, ...chosen } });
+      if (chosen) setLooked((before) => before && { file, preview: { ...before.preview, ...chosen, notes: [] } });
       // The server's schema checks the whole of it; the union is told apart by its kind.
-      const preview = await lookAtFile(formOf(as, file, chosen) as Parameters<typeof lookAtFile>[0]);
+      const preview = await lookAtFile(formOf(as, file, chosen, into) as Parameters<typeof lookAtFile>[0]);
       if (mine === looks.current) setLooked({ file, preview });
     });
 
@@ -73,14 +76,14 @@ export function ImportFile() {
       const limit = kind === 'archive' ? ARCHIVE_LIMIT_BYTES : IMPORT_LIMIT_BYTES;
       if (file.size > limit) throw new ClientError(413, 'too-large', `${file.name} is larger than ${limit / 1e6} MB. ${kind === 'archive' ? 'Take it out batch by batch, or use a backup.' : 'Cut it in parts.'}`);
       const given = { file_name: file.name.slice(0, 120), text: await file.text() };
-      setLooked({ file: given, preview: await lookAtFile(formOf(kind, given, null) as Parameters<typeof lookAtFile>[0]) });
+      setLooked({ file: given, preview: await lookAtFile(formOf(kind, given, null, batch) as Parameters<typeof lookAtFile>[0]) });
     });
     if (input.current) input.current.value = '';
   }
 
   async function keep() {
     if (!looked) return;
-    const form = { ...formOf(kind, looked.file, choicesOf(looked.preview)), ...(kind === 'readings' && { batch_id: batch }) };
+    const form = formOf(kind, looked.file, choicesOf(looked.preview), batch);
     await act(async () => {
       const kept = await keepFile(form as Parameters<typeof keepFile>[0]);
       setDone({ id: kept.id, says: `Kept: ${countWords(kept.counts)}.` });
@@ -118,7 +121,16 @@ export function ImportFile() {
           <Preview preview={looked.preview} onChoose={(chosen) => void look(looked.file, chosen)} />
           <div className="flex flex-wrap items-end gap-3 border-b bg-desk px-(--margin) py-4">
             {kind === 'readings' && (
-              <Select label="into" value={batch} onChange={(event) => setBatch(event.target.value)} error={fields.batch_id} className="min-w-56">
+              <Select
+                label="into"
+                value={batch}
+                onChange={(event) => {
+                  setBatch(event.target.value);
+                  void look(looked.file, choicesOf(looked.preview), kind, event.target.value);
+                }}
+                error={fields.batch_id}
+                className="min-w-56"
+              >
                 <option value="">choose a batch</option>
                 {(batches ?? []).map((item) => (
                   <option key={item.id} value={item.id}>
@@ -126,6 +138,15 @@ export function ImportFile() {
                   </option>
                 ))}
               </Select>
+            )}
+            {kind === 'readings' && (
+              <div role="status" className="order-last basis-full empty:hidden">
+                {looked.preview.notes.map((note) => (
+                  <p key={note} className="type-reason max-w-[70ch] break-words">
+                    <State state="Check" word="Before the pitch" /> <Sentence>{note}</Sentence>
+                  </p>
+                ))}
+              </div>
             )}
             <Button look="first" disabled={busy || looked.preview.good === 0 || (kind === 'readings' && batch === '')} onClick={() => void keep()}>
               Keep {countWords({ [kind === 'readings' ? 'readings' : 'batches']: looked.preview.good })}

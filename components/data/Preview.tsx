@@ -26,11 +26,12 @@ export function Preview({ preview, onChoose }: { preview: ImportPreviewBody; onC
             From <span className="fig">{day(preview.from)}</span> to <span className="fig">{day(preview.to)}</span>.
           </p>
         )}
-        {preview.notes.map((note) => (
-          <p key={note} className="type-reason text-ink2">
-            {note}
-          </p>
-        ))}
+        {preview.kind !== 'readings' &&
+          preview.notes.map((note) => (
+            <p key={note} className="type-reason text-ink2">
+              {note}
+            </p>
+          ))}
       </div>
       {preview.header.length > 0 && (
         <div className="flex flex-wrap items-start gap-3 border-b px-(--margin) py-4">

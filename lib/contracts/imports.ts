@@ -33,8 +33,8 @@ const batchesFile = z.object({
 /** What this house exported as JSON. */
 const archiveFile = z.object({ kind: z.literal('archive'), file_name: line(120), text: fileText(ARCHIVE_LIMIT_BYTES) });
 
-/** A file to look at; nothing of it is kept. Columns and units left out are guessed. */
-export const importPreviewForm = z.discriminatedUnion('kind', [readingsFile, batchesFile, archiveFile]);
+/** A file to look at; nothing of it is kept. Columns and units left out are guessed; readings that name the batch they would go into are held against its pitch. */
+export const importPreviewForm = z.discriminatedUnion('kind', [readingsFile.extend({ batch_id: id.optional() }), batchesFile, archiveFile]);
 export type ImportPreviewForm = z.infer<typeof importPreviewForm>;
 export type ReadingsFile = z.infer<typeof readingsFile>;
 export type BatchesFile = z.infer<typeof batchesFile>;

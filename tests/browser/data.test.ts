@@ -57,6 +57,21 @@ describe('data in and out', () => {
     await page.getByText(/^Kept:/).waitFor({ state: 'hidden' });
   });
 
+  it('says beside the batch that is chosen what is from before its pitch, and no more of it for another', async () => {
+    const late = await buildBatch({ cellarId: keeper.cellarId, name: 'Late pitch', pitchedAt: new Date(Date.now() - 3_600_000) });
+    const visit = await settings('data', { phone: true });
+    const { page } = visit;
+    const day = new Date(Date.now() - 2 * 86_400_000).toISOString().slice(0, 10);
+    await page.getByLabel('file').setInputFiles(csv(`${day} 06:00;1,049;18,5\n${day} 07:00;1,048;18,6\n`));
+    await page.getByLabel('into').selectOption({ label: 'Late pitch' });
+    const note = page.getByText('from before Late pitch was pitched');
+    await note.waitFor();
+    await expectGood(visit);
+    await page.getByLabel('into').selectOption({ label: '<b>Oat</b> stout' });
+    await note.waitFor({ state: 'hidden' });
+    await late.destroy();
+  });
+
   it('keeps a choice of column that was made before the answer to the one before it', async () => {
     const visit = await settings('data');
     const { page } = visit;

@@ -55,6 +55,18 @@ describe('a log file', () => {
     expect([await count('readings'), await count('sensors'), await count('imports')]).toEqual(before);
   });
 
+  it('says how many of its readings are from before the pitch of the batch it would go into', async () => {
+    const actor = await buildMember('brewer');
+    const at = (pitchedAt: string | null) => buildBatch({ cellarId: actor.cellarId, name: 'Windfall', pitchedAt: pitchedAt === null ? null : new Date(pitchedAt) });
+    const notes = async (batch: Batch) => (await preview(actor, { text: CSV, time_zone: 'UTC', batch_id: batch.id })).notes;
+    expect((await preview(actor, { text: CSV, time_zone: 'UTC' })).notes).toEqual([]);
+    expect(await notes(await at('2026-03-01T06:00:00Z'))).toEqual([]);
+    expect(await notes(await at(null))).toEqual([]);
+    expect(await notes(await at('2026-03-01T06:30:00Z'))).toEqual([expect.stringMatching(/^1 of 2 readings is from before Windfall was pitched, 2026-03-01 06:30 UTC\. Kept, it counts /)]);
+    expect(await notes(await at('2026-03-02T06:30:00Z'))).toEqual([expect.stringMatching(/^2 of 2 readings are from before Windfall was pitched/)]);
+    await expect(preview(await buildMember('brewer'), { text: CSV, batch_id: (await at(null)).id })).rejects.toThrow('no such batch');
+  });
+
   it('goes into a batch when a person agrees, and out again in one step', async () => {
     const actor = await buildMember('brewer');
     const batch = await buildBatch({ cellarId: actor.cellarId });

@@ -5,6 +5,7 @@ import { systemClock, type Clock } from '@/lib/clock';
 import type { ImportPreviewBody, ImportPreviewForm } from '@/lib/contracts/imports';
 import type { ImportedBatch } from '@/lib/core/importing/batches';
 import type { ImportedReading } from '@/lib/core/importing/readings';
+import { loadBatch } from '../batches/load';
 import { iso } from '../iso';
 import { previewArchive } from './preview-archive';
 import { readArchive, readBatches, readReadings } from './read';
@@ -14,8 +15,18 @@ const ERRORS_SHOWN = 100;
 
 const day = (at: number | null) => (at === null ? '–' : iso(at).slice(0, 10));
 
-const readingWords = (reading: ImportedReading) => `${iso(reading.at).slice(0, 16).replace('T', ' ')} UTC, ${reading.gravity.toFixed(3)}${reading.temperature === null ? '' : `, ${reading.temperature.toFixed(1)} °C`}`;
+const minute = (at: number) => `${iso(at).slice(0, 16).replace('T', ' ')} UTC`;
+
+const readingWords = (reading: ImportedReading) => `${minute(reading.at)}, ${reading.gravity.toFixed(3)}${reading.temperature === null ? '' : `, ${reading.temperature.toFixed(1)} °C`}`;
 const batchWords = (batch: ImportedBatch) => `${batch.name}, ${batch.kind}, ${day(batch.pitchedAt)} to ${day(batch.endedAt)}, ${batch.originalGravity?.toFixed(3) ?? '–'} to ${batch.finalGravity?.toFixed(3) ?? '–'}, ${Number(batch.volumeL.toFixed(2))} L${batch.volumeTaken ? ', as the file names no volume' : ''}`;
+
+/** Readings from before the pitch count for the curve like the rest: another must's, or a float's on the bench, would bend it. */
+async function notesOf(actor: Actor, batchId: string, times: readonly number[]): Promise<string[]> {
+  const { name, pitchedAt } = await loadBatch(actor.cellarId, batchId);
+  const early = pitchedAt === null ? 0 : times.filter((at) => at < pitchedAt.getTime()).length;
+  if (pitchedAt === null || early === 0) return [];
+  return [`${early} of ${times.length} ${times.length === 1 ? 'reading' : 'readings'} ${early === 1 ? 'is' : 'are'} from before ${name} was pitched, ${minute(pitchedAt.getTime())}. Kept, ${early === 1 ? 'it counts' : 'they count'} for its curve like any other: if ${early === 1 ? 'it is' : 'they are'} not of this must, cut ${early === 1 ? 'it' : 'them'} from the file, or choose another batch.`];
+}
 
 /** Looks at a file: what it would bring, and what is wrong with it, line by line. Nothing is kept. */
 export async function previewImport(actor: Actor, form: ImportPreviewForm, clock: Clock = systemClock): Promise<ImportPreviewBody> {
@@ -39,7 +50,7 @@ export async function previewImport(actor: Actor, form: ImportPreviewForm, clock
     good: good.length,
     bad: errors.length,
     errors: errors.slice(0, ERRORS_SHOWN),
-    notes: [],
+    notes: form.kind === 'readings' && form.batch_id !== undefined ? await notesOf(actor, form.batch_id, times) : [],
     from: span && iso(span.low),
     to: span && iso(span.high),
   };
