@@ -2,11 +2,11 @@
 
 import { useMemo, useState } from 'react';
 import { pictureOf } from '@/components/charts/from-wire';
+import { dayWords } from '@/components/book/words';
 import { wholeSpan, type Span } from '@/components/charts/picture';
 import { isWhole, within } from '@/components/charts/zoom';
 import { clock, when } from '@/components/charts/zone';
 import { LinkButton } from '@/components/ui/Button';
-import { dayWords } from '@/components/book/words';
 import { MuteBar } from '@/components/messages/BatchMute';
 import { Shares } from '@/components/share/Shares';
 import { Haze } from '@/components/ui/Haze';

@@ -6,10 +6,10 @@ import { Select } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
 import { createEntry, updateEntry } from '@/lib/client/entries';
 import { ClientError } from '@/lib/client/fetcher';
+import { focusFirstError } from '@/lib/client/focus';
 import type { EntryBody } from '@/lib/contracts/batches';
 import { correctionOf, draftOfEntry, emptyDraft, entryOf, errorsOf, toLocal, type DraftErrors, type EntryDraft, type EntryKind } from './entry-form';
 import { EntryFields } from './EntryFields';
-import { focusFirstError } from '@/lib/client/focus';
 import type { MustKnown } from './refractometer';
 
 const KINDS: { kind: EntryKind; name: string; alters: boolean }[] = [

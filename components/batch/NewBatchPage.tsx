@@ -12,6 +12,7 @@ import { Sentence } from '@/components/ui/Sentence';
 import { Vessel } from '@/components/vessel/Vessel';
 import { createBatch } from '@/lib/client/batches';
 import { ClientError } from '@/lib/client/fetcher';
+import { focusFirstError } from '@/lib/client/focus';
 import { useMe } from '@/lib/client/me';
 import { useBatchProposal } from '@/lib/client/musts';
 import type { BatchProposal } from '@/lib/contracts/musts';
@@ -20,7 +21,6 @@ import { BatchFields } from './BatchFields';
 import { batchErrors, batchToCreate, draftOfProposal, newDraft, type BatchDraft, type BatchErrors } from './batch-form';
 import { toLocal } from './entry-form';
 import { typedNumber } from './figures';
-import { focusFirstError } from '@/lib/client/focus';
 
 /** `must`: the sheet it is made from, in the version given. */
 export function NewBatchPage({ must = null, version, gravity = '' }: { must?: string | null; version?: number | undefined; /** As measured at the sheet, SG. */ gravity?: string }) {

@@ -5,11 +5,11 @@ import { Button } from '@/components/ui/Button';
 import { FormError } from '@/components/ui/Notice';
 import { updateBatch } from '@/lib/client/batches';
 import { ClientError } from '@/lib/client/fetcher';
+import { focusFirstError } from '@/lib/client/focus';
 import type { BatchBody, UpdateBatch } from '@/lib/contracts/batches';
 import { BatchFields } from './BatchFields';
 import { batchErrors, batchToUpdate, draftOf, type BatchErrors } from './batch-form';
 import { toLocal } from './entry-form';
-import { focusFirstError } from '@/lib/client/focus';
 
 interface SetupFormProps {
   batch: BatchBody;

@@ -2,7 +2,6 @@
 
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
-import { focusFirstError } from '@/lib/client/focus';
 import { degrees, typedNumber } from '@/components/batch/figures';
 import { Box } from '@/components/ui/Box';
 import { Button } from '@/components/ui/Button';
@@ -12,6 +11,7 @@ import { useMoney } from '@/components/ui/money';
 import { FormError } from '@/components/ui/Notice';
 import { ClientError } from '@/lib/client/fetcher';
 import { bottleBatch, usePlaces } from '@/lib/client/lots';
+import { focusFirstError } from '@/lib/client/focus';
 import type { BenchFacts, BenchForm } from '@/lib/contracts/bench';
 import type { BenchRequest, BenchSafe, BenchVerdict } from '@/lib/core/bottling/bench';
 import { BOTTLES } from '@/lib/core/bottling/bottles';

@@ -26,6 +26,7 @@ export function Preview({ preview, onChoose }: { preview: ImportPreviewBody; onC
             From <span className="fig">{day(preview.from)}</span> to <span className="fig">{day(preview.to)}</span>.
           </p>
         )}
+        {/* What is to be said of readings is about their batch, and stands beside it. */}
         {preview.kind !== 'readings' &&
           preview.notes.map((note) => (
             <p key={note} className="type-reason text-ink2">
