@@ -142,9 +142,12 @@ export function ImportFile() {
             {kind === 'readings' && (
               <div role="status" className="order-last basis-full empty:hidden">
                 {looked.preview.notes.map((note) => (
-                  <p key={note} className="type-reason max-w-[70ch] break-words">
-                    <State state="Check" word="Before the pitch" /> <Sentence>{note}</Sentence>
-                  </p>
+                  <div key={note}>
+                    <State state="Check" word="Before the pitch" />
+                    <p className="type-reason max-w-[70ch] break-words">
+                      <Sentence>{note}</Sentence>
+                    </p>
+                  </div>
                 ))}
               </div>
             )}

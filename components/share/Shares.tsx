@@ -26,15 +26,19 @@ export function Shares({ batchId, day, folded = false }: SharesProps) {
   const [people, setPeople] = useState(false);
   const [tastings, setTastings] = useState(true);
   const [failed, setFailed] = useState<string | null>(null);
+  const [wrongDays, setWrongDays] = useState<string | undefined>();
   const [copied, setCopied] = useState<string | null>(null);
 
   async function attempt(act: () => Promise<unknown>) {
     setFailed(null);
+    setWrongDays(undefined);
     try {
       await act();
     } catch (problem) {
       const told = problem instanceof ClientError ? problem : null;
-      setFailed(Object.values(told?.fields ?? {})[0]?.[0] ?? told?.message ?? 'It was not done. Try again.');
+      const days = told?.fields.expires_in_days?.[0];
+      if (days) setWrongDays(days);
+      else setFailed(told?.message ?? 'It was not done. Try again.');
     }
   }
   return (
@@ -69,16 +73,16 @@ export function Shares({ batchId, day, folded = false }: SharesProps) {
           </li>
         ))}
       </ul>
+      {failed && <FormError>{failed}</FormError>}
       {asking ? (
         <div className="flex flex-col gap-2 border-b px-(--margin) py-3">
-          <Field label="open for" unit="days" inputMode="numeric" value={days} onChange={(event) => setDays(event.target.value)} className="w-40" />
+          <Field label="open for" unit="days" inputMode="numeric" value={days} onChange={(event) => setDays(event.target.value)} error={wrongDays} className="w-40" />
           <Box ticked={tastings} onTick={setTastings}>
             <span className="type-body">Guests may write tasting notes.</span>
           </Box>
           <Box ticked={people} onTick={setPeople}>
             <span className="type-body">Show my name, and those of tasters who chose it.</span>
           </Box>
-          {failed && <FormError>{failed}</FormError>}
           <Button className="self-start" onClick={() => void attempt(() => createShare(batchId, { expires_in_days: typedNumber(days) ?? Number.NaN, show_people: people, takes_tastings: tastings }))}>
             Make a link
           </Button>

@@ -215,6 +215,34 @@ describe('what is done to a drink', () => {
   });
 });
 
+describe('a batch at work', () => {
+  it('is shared from its page, says at the field what is wrong, and tells of a link that could not be revoked', async () => {
+    const batch = await ciderAt(brewer, { batch: { name: 'Early windfall' } });
+    const { page, context } = await visit({ phone: true });
+    await open(page, `/batches/${batch.id}`);
+    const links = page.getByRole('region', { name: 'Share links' });
+    await links.getByRole('button', { name: 'Share it by a link' }).click();
+    await links.getByLabel('open for').fill('0');
+    await links.getByRole('button', { name: 'Make a link' }).click();
+    await links.getByText('must be at least a day').waitFor();
+    expect(await links.getByLabel('open for').getAttribute('aria-invalid')).toBe('true');
+    await links.getByLabel('open for').fill('30');
+    await links.getByRole('button', { name: 'Make a link' }).click();
+    const address = await links.getByRole('link', { name: /\/share\// }).getAttribute('href');
+    expect((await fetch(address!)).status).toBe(200);
+
+    await page.reload();
+    await page.route('**/api/v1/**', (route) => (route.request().method() === 'DELETE' ? route.abort() : route.continue()));
+    await links.getByRole('button', { name: 'Revoke' }).click();
+    await links.getByRole('alert').waitFor();
+    await page.unroute('**/api/v1/**');
+    await links.getByRole('button', { name: 'Revoke' }).click();
+    await links.getByRole('link', { name: /\/share\// }).waitFor({ state: 'hidden' });
+    await expectNoSidewaysScroll(page);
+    await context.close();
+  });
+});
+
 describe('the rounds', () => {
   it('go into a calendar by a private address, until it is ended', async () => {
     const { page, context } = await visit({ phone: true });
