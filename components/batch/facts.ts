@@ -20,18 +20,25 @@ const share = (part: number, whole: number) => Math.round((part / whole) * 100);
 
 const ARRIVING = { figure: '–', more: null, arriving: true } as const;
 
-/** What is last known of the gravity: the judged one, else the last reading with its time. */
+/** What is last known of the gravity: the judged one now, else where the judge last knew it to stand or the last reading, with its time. */
 function gravityFact(batch: BatchBody, last: LastReading | null | undefined, now: number, timeZone: string): Omit<Fact, 'phone'> {
   const judged = batch.assessment?.gravity;
   if (judged) return { name: batch.state === 'working' ? 'now' : 'last known', figure: gravityText(judged.value), more: doubt(judged) };
-  if (last === undefined) return { name: 'now', ...ARRIVING };
-  return last ? { name: 'last known', figure: gravityText(last.gravity), more: `at ${when(last.at, now, timeZone)}` } : { name: 'now', figure: 'not read', more: null };
+  const known = judgedLast(batch) ?? last;
+  if (known === undefined) return { name: 'now', ...ARRIVING };
+  return known ? { name: 'last known', figure: gravityText(known.gravity), more: `at ${when(known.at, now, timeZone)}` } : { name: 'now', figure: 'not read', more: null };
 }
 
 export interface LastReading {
   /** Seconds since 1970. */
   at: number;
   gravity: number;
+}
+
+/** Where the judge last knew it to stand, which a reading alone may miss by its float's offset. */
+function judgedLast({ assessment }: Pick<BatchBody, 'assessment'>): LastReading | null {
+  const known = assessment?.last_gravity;
+  return known ? { at: Date.parse(known.at) / 1000, gravity: known.value } : null;
 }
 
 const FOAM_WORDS: Record<Foam, string> = { none: 'none', ring: 'a ring', cover: 'covers it', at_neck: 'at the neck' };

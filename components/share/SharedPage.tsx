@@ -23,7 +23,7 @@ import { HOW_TASTED } from '@/lib/core/how/lots';
 import { FallPicture } from './FallPicture';
 
 const ORIGINAL = how('as the brewer told it, or the reading at the pitch, at 20 °C; the top of the picture', SOURCES.told);
-const LAST = how('last reading by hydrometer, else by the float, at 20 °C; the picture follows the curve through all readings', SOURCES.told);
+const LAST = how('the latest word of the float or the hydrometer, at 20 °C; the picture follows the curve through all readings', SOURCES.told);
 
 /** Days on a public page are those of the calendar everywhere: nobody's own zone is told. */
 const ZONE = 'UTC';

@@ -168,11 +168,13 @@ interface Known {
   byHand: boolean;
 }
 
-/** The newest reading of either kind, where no judgement gives the gravity now. */
-function lastKnown({ series, entries }: LaneBody): Known | null {
+/** Where it last was known to stand by the judge or by hand, or the newest reading of either kind, where no judgement gives the gravity now. */
+function lastKnown({ assessment, series, entries }: LaneBody): Known | null {
+  const judged = assessment?.last_gravity;
   const index = series.gravity.findLastIndex((value) => value !== null);
   const known = entries.flatMap((entry): Known[] => (entry.kind === 'reading' && entry.gravity !== null ? [{ gravity: entry.gravity, at: Date.parse(entry.at) / 1000, byHand: true }] : []));
-  if (index >= 0) known.push({ gravity: series.gravity[index]!, at: series.at[index]!, byHand: false });
+  if (judged) known.push({ gravity: judged.value, at: Date.parse(judged.at) / 1000, byHand: false });
+  else if (index >= 0) known.push({ gravity: series.gravity[index]!, at: series.at[index]!, byHand: false });
   return known.sort((a, b) => b.at - a.at)[0] ?? null;
 }
 

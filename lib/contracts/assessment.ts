@@ -23,6 +23,8 @@ export const assessmentSchema = z.object({
   at: z.string(),
   stage: z.enum(STAGES),
   gravity: estimate.nullable(),
+  /** Where it was last known to stand; judgements kept from before it was told are without. */
+  last_gravity: z.object({ at: z.string(), value: z.number() }).nullable().optional(),
   temperature_c: z.number().nullable(),
   last_reading_at: z.string().nullable(),
   rate_points_per_day: estimate.nullable(),
@@ -111,6 +113,7 @@ export function presentAssessment(assessment: Assessment): AssessmentBody {
     at: iso(assessment.at),
     stage: assessment.stage,
     gravity: presentEstimate(assessment.gravity, 5),
+    last_gravity: assessment.lastGravity && { at: iso(assessment.lastGravity.at), value: rounded(assessment.lastGravity.value, 5) },
     temperature_c: assessment.temperatureC === null ? null : rounded(assessment.temperatureC, 2),
     last_reading_at: isoOrNull(assessment.lastReadingAt),
     rate_points_per_day: presentEstimate(assessment.ratePointsPerDay, 3),

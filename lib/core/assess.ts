@@ -106,6 +106,7 @@ function judgementOf(watch: Watch, at: Instant, hour: number, picture: boolean):
     at,
     stage: hand ? stageByHand(calls) : stageOf(watch),
     gravity: level === null || sdLevel === null ? null : { value: sgOf(level), lo: sgOf(level - Z80 * sdLevel), hi: sgOf(level + Z80 * sdLevel) },
+    lastGravity: lastGravityOf(watch, level, hand ? track.instantOf(hand.last.hour) : last ? last.at : at),
     temperatureC: temperature,
     lastReadingAt: last ? last.at : hand ? track.instantOf(hand.last.hour) : null,
     ratePointsPerDay,
@@ -119,6 +120,13 @@ function judgementOf(watch: Watch, at: Instant, hour: number, picture: boolean):
   };
   if (!picture) return { assessment, curve: [], expected: [], gas: [], footing: null };
   return { assessment, ...drawing(watch, at, hand ? hand.fit : null), footing: footingOf({ watch, at, hour, level, rate, fit, byHand: hand !== null, finalGravity }) };
+}
+
+/** @param from when a level of now was measured */
+function lastGravityOf(watch: Watch, level: number | null, from: Instant): Assessment['lastGravity'] {
+  if (level !== null) return { at: from, value: sgOf(level) };
+  const known = watch.lastKnown();
+  return known && { at: watch.track.instantOf(known.hour), value: sgOf(known.points) };
 }
 
 /** Expected final gravity with its intervals; their upper ends never lie more than 1.5 points above the present level. */
@@ -170,6 +178,7 @@ function unpitched(setup: BatchSetup, at: Instant, readings: readonly Reading[])
       at,
       stage: told ? 'not_started' : 'unknown',
       gravity: null,
+      lastGravity: null,
       temperatureC: last?.temperature ?? null,
       lastReadingAt: last?.at ?? null,
       ratePointsPerDay: null,

@@ -132,6 +132,8 @@ export interface Assessment {
   stage: Stage;
   /** Present gravity, SG, smoothed. */
   gravity: Estimate | null;
+  /** Where it was last known to stand, SG: now, or by the last sound word of a float that gives nothing, or by a hydrometer since. */
+  lastGravity: { at: Instant; value: number } | null;
   /** Median of the last three hours of data, °C. */
   temperatureC: number | null;
   lastReadingAt: Instant | null;

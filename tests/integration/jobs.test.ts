@@ -33,7 +33,7 @@ const open = jobQuery.parse({});
 const quiet: Call = { verdict: 'no', kind: null, since: null, expectedAt: null, headline: '', reason: '', act: null, changesIt: null, evidence: [] };
 
 const judged = (calls: Partial<Record<CallName, Partial<Call>>>, over: Partial<Assessment> = {}): Assessment => ({
-  at: NOON, stage: 'slowing', gravity: null, temperatureC: null, lastReadingAt: NOON, ratePointsPerDay: null, gasLPerH: null, finalGravity: null, terminalAt: null, abvPercent: null, expectedAbvPercent: null, attenuationPercent: null,
+  at: NOON, stage: 'slowing', gravity: null, lastGravity: null, temperatureC: null, lastReadingAt: NOON, ratePointsPerDay: null, gasLPerH: null, finalGravity: null, terminalAt: null, abvPercent: null, expectedAbvPercent: null, attenuationPercent: null,
   calls: Object.fromEntries(CALL_NAMES.map((name) => [name, { ...quiet, ...calls[name] }])) as Assessment['calls'],
   ...over,
 });

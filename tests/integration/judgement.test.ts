@@ -3,11 +3,17 @@ import { Batch } from '@/db/models';
 import { ManualClock } from '@/lib/clock';
 import { judgementSchema } from '@/lib/contracts/assessment';
 import { createEntry as entryForm } from '@/lib/contracts/batches';
+import { createShare as createShareForm } from '@/lib/contracts/shares';
 import { NotFoundError } from '@/lib/errors';
 import { assessBatch } from '@/lib/services/batches/assess';
 import { getAssessment, getJudgement } from '@/lib/services/batches/get-judgement';
 import { updateBatch } from '@/lib/services/batches/update';
 import { createEntry } from '@/lib/services/entries/create';
+import { getBench } from '@/lib/services/bench/get';
+import { getDrink } from '@/lib/services/drink/get';
+import { createShare } from '@/lib/services/shares/manage';
+import { getShared } from '@/lib/services/shares/shared';
+import { readAt } from '../support/cellar';
 import { useDatabase } from '../support/database';
 import { buildBatch, buildMember, buildSensor, writeReadings } from '../support/factories';
 
@@ -107,5 +113,36 @@ describe('the judgement of a batch', () => {
     const stranger = await buildMember('keeper');
     await expect(getJudgement(stranger, batch.id, {}, clock)).rejects.toBeInstanceOf(NotFoundError);
     await expect(getJudgement(stranger, batch.id, { at: new Date(clock.now()).toISOString() }, clock)).rejects.toBeInstanceOf(NotFoundError);
+  });
+});
+
+describe('the gravity that is told of a batch', () => {
+  it('is the later word of float and hydrometer, alike on its page, at the bench and behind its link', async () => {
+    const { keeper, clock, batch } = await judged();
+    const page = async () => (await getAssessment(keeper, batch.id, {}, clock)).last_gravity!.value;
+    const link = await createShare(keeper, batch.id, createShareForm.parse({}), clock);
+    const token = link.url!.split('/').at(-1)!;
+    const told = async () => {
+      await assessBatch(batch.id, { clock });
+      const [drink, bench, shared] = [await getDrink(keeper, batch.id, clock), (await getBench(keeper, batch.id, clock)).drink, await getShared(token, clock)];
+      expect(bench.gravity).toBe(drink.gravity);
+      expect(shared.gravity).toBe(drink.gravity);
+      expect(drink.gravity).toBeCloseTo(await page(), 5);
+      return drink;
+    };
+    // Read a day ago, fallen since, and the float speaks.
+    await readAt(batch, 1.0027, clock.now() - DAY);
+    const speaking = await told();
+    expect(speaking.gravity_by).toBe('float');
+    expect(speaking.gravity).toBeLessThan(1.002);
+    // Silent, what it said last still is the latest word.
+    clock.advance(2 * DAY);
+    const silent = await told();
+    expect((await getAssessment(keeper, batch.id, {}, clock)).gravity).toBeNull();
+    expect(silent.gravity_by).toBe('float');
+    expect(silent.gravity).toBeCloseTo(speaking.gravity!, 3);
+    // Until somebody reads.
+    await readAt(batch, 0.999, clock.now() - 60 * MINUTE);
+    expect(await told()).toMatchObject({ gravity: 0.999, gravity_by: 'hydrometer' });
   });
 });

@@ -130,6 +130,18 @@ export class Figures {
     return this.levelMemo;
   }
 
+  /** Where it last was known to stand, points, while the float gives nothing: by its last sound word, or by the hydrometer since. */
+  lastKnown(): { hour: number; points: number } | null {
+    const { bins } = this.track;
+    const sound = this.track.lastSound(this.lookedAt);
+    const end = Math.floor(sound) + 1;
+    const from = Math.max(end - 24, this.segment.restarted ? this.segment.from + 1 : -48);
+    const points = bins.n === 0 ? null : this.levelAt(sound, end, end - from < 0.6 * 24 ? null : this.track.line(from, end));
+    const hand = this.handReadings.at(-1);
+    if (points === null || (hand && hand.hour > sound)) return hand ?? null;
+    return { hour: sound, points };
+  }
+
   /** Drops the figures of the look before: the hour, the record or the set-up has changed. */
   protected forget(): void {
     this.lines.clear();
@@ -144,9 +156,13 @@ export class Figures {
   }
 
   private measureLevel(): number | null {
-    const line = this.line(24);
-    if (line && Math.abs(line.slope) < 6) return this.track.calibrate(line.level + (line.slope / 24) * (this.lookedAt - line.middle));
-    const raw = this.track.level(this.lookedAt - 6, this.lookedAt);
+    return this.levelAt(this.lookedAt, this.lookedAt, this.line(24));
+  }
+
+  /** Calibrated level at `hour`, points, from the day's line where it is quiet, else from the six hours to `end`. */
+  private levelAt(hour: number, end: number, line: Line | null): number | null {
+    if (line && Math.abs(line.slope) < 6) return this.track.calibrate(line.level + (line.slope / 24) * (hour - line.middle));
+    const raw = this.track.level(end - 6, end);
     return raw === null ? null : this.track.calibrate(raw);
   }
 

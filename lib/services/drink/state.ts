@@ -10,8 +10,6 @@ import { detailOf, ledgerOf, type Ledger } from './ledger';
 import { loadStories, type Stories } from './load';
 import { makeupOf, type Makeup } from './makeup';
 
-/** A float's last word counts this long after the last reading by hand before it is taken instead, ms. */
-const HAND_GOES_FIRST_MS = 48 * 3_600_000;
 /** Half a division of a hydrometer. */
 const READING_DOUBT = 0.0005;
 
@@ -66,6 +64,14 @@ function lastSugarAt(stories: Stories, batch: Batch, own: Date | null, at: Date)
   return all.length > 0 ? new Date(Math.max(...all.map((time) => time.getTime()))) : null;
 }
 
+/** Where the judge last knew it to stand. */
+function judgedGravity(assessment: AssessmentBody | null): { value: number; at: Date } | null {
+  const known = assessment?.last_gravity;
+  if (known) return { value: known.value, at: new Date(known.at) };
+  // Kept from before it was told, as of a batch that has ended since.
+  return assessment?.gravity && assessment.last_reading_at ? { value: assessment.gravity.value, at: new Date(assessment.last_reading_at) } : null;
+}
+
 /** What stands in a batch's vessel at `at`, from its log, its sensor and its sources. */
 export async function drinkState(batch: Batch, at: Date, transaction?: Transaction): Promise<DrinkState> {
   const stories = await loadStories(batch, transaction);
@@ -74,10 +80,10 @@ export async function drinkState(batch: Batch, at: Date, transaction?: Transacti
   const ledger = { ...told, lastAdditionAt: lastSugarAt(stories, batch, told.lastAdditionAt, at) };
   const makeup = makeupOf(stories, batch.id, at);
   const assessment = (await batchState<AssessmentBody>(batch.id, transaction))?.assessment ?? null;
-  const floatAt = assessment?.last_reading_at ? new Date(assessment.last_reading_at) : null;
-  const floatCounts =
-    assessment?.gravity && floatAt !== null && floatAt <= at && (ledger.gravityAt === null || floatAt.getTime() - ledger.gravityAt.getTime() > HAND_GOES_FIRST_MS) && (ledger.lastAdditionAt === null || floatAt > ledger.lastAdditionAt);
-  const gravity = floatCounts ? assessment.gravity!.value : ledger.gravity;
+  const judged = judgedGravity(assessment);
+  // The freshest word counts; nothing that was measured before something went in says where it stands since.
+  const judgedCounts = judged !== null && judged.at <= at && (ledger.gravityAt === null || judged.at > ledger.gravityAt) && (ledger.lastAdditionAt === null || judged.at > ledger.lastAdditionAt);
+  const gravity = judgedCounts ? judged.value : ledger.gravity;
   const effectiveOg = ledger.effectiveOg;
   return {
     batch,
@@ -86,8 +92,8 @@ export async function drinkState(batch: Batch, at: Date, transaction?: Transacti
     ledger,
     makeup,
     gravity,
-    gravityAt: floatCounts ? floatAt : ledger.gravityAt,
-    gravityBy: floatCounts ? 'float' : ledger.gravityBy,
+    gravityAt: judgedCounts ? judged.at : ledger.gravityAt,
+    gravityBy: judgedCounts ? 'float' : ledger.gravityBy,
     temperatureC: assessment?.temperature_c ?? null,
     strength: effectiveOg !== null && gravity !== null ? strengthByMethods(within(effectiveOg, READING_DOUBT), within(gravity, READING_DOUBT)) : null,
     expectedFinal: expectedFinalOf(batch, effectiveOg, makeup.unfermentable),

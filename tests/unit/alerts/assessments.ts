@@ -11,6 +11,7 @@ export function assessmentWith(at: Instant, { calls = {}, ...overrides }: Partia
     at,
     stage: 'slowing',
     gravity: { value: 1.02, lo: 1.019, hi: 1.021 },
+    lastGravity: { at: at - 15 * 60_000, value: 1.02 },
     temperatureC: 20,
     lastReadingAt: at - 15 * 60_000,
     ratePointsPerDay: { value: 3, lo: 2.5, hi: 3.5 },

@@ -35,6 +35,8 @@ describe('the line of facts', () => {
   it('gives the last reading its time where nothing is known of now', () => {
     const silent = batch({ assessment: judged({}, { gravity: null }) });
     expect(factsOf(silent, { at: NOW - 15 * 3600, gravity: 1.0312 }, NOW, 'UTC')[2]).toMatchObject({ name: 'last known', figure: '1.031', more: 'at Wed 23:32' });
+    const known = batch({ assessment: judged({}, { gravity: null, last_gravity: { at: hours(-14), value: 1.0288 } }) });
+    expect(factsOf(known, { at: NOW - 14 * 3600, gravity: 1.0312 }, NOW, 'UTC')[2]).toMatchObject({ name: 'last known', figure: '1.029', more: 'at 00:32' });
   });
 
   it('gives the likely end as days, until it is reached or has passed', () => {

@@ -255,6 +255,25 @@ describe('the calls', () => {
     expect(calls.bottle.verdict).toBe('unknown');
   });
 
+  it('keep where the float last knew it to stand, steps and offset taken out, until a hydrometer says more', () => {
+    const off = record(5, cider).map((reading) => ({ ...reading, gravity: reading.gravity + 0.003 }));
+    const read = (day: number): BatchEvent => ({ kind: 'reading', at: PITCH + day * DAY, gravity: 1 + cider(day) / 1000 });
+    const silent = at(7, off, { events: [read(4.5)] });
+    expect(silent).toMatchObject({ gravity: null });
+    expect(silent.lastGravity!.at).toBeGreaterThan(PITCH + 4.95 * DAY);
+    expect(Math.abs(silent.lastGravity!.value - (1 + cider(5) / 1000))).toBeLessThan(0.0015);
+    const speaking = at(5.01, off, { events: [read(4.5)] });
+    expect(speaking.lastGravity).toEqual({ at: PITCH + 5 * DAY, value: speaking.gravity!.value });
+    const since = at(7, off, { events: [read(4.5), read(6)] });
+    expect(since.lastGravity).toEqual({ at: PITCH + 6 * DAY, value: since.gravity!.value });
+    // Stuck, it says nothing of now either.
+    const stuck = record(8, cider).map((reading) => (reading.at > PITCH + 4 * DAY ? { ...reading, gravity: 1.03 + 1e-5 * Math.sin(reading.at) } : reading));
+    const frozen = at(8, stuck);
+    expect(frozen).toMatchObject({ gravity: null, calls: { sensor: { kind: 'frozen' } } });
+    expect(Math.abs(frozen.lastGravity!.at - (PITCH + 4 * DAY))).toBeLessThan(0.3 * DAY);
+    expect(at(7, []).lastGravity).toBeNull();
+  });
+
   it('see a float that is stuck', () => {
     const readings = record(6, cider).map((reading) => (reading.at > PITCH + 4 * DAY ? { ...reading, gravity: 1.03 + 1e-5 * Math.sin(reading.at) } : reading));
     expect(at(6, readings).calls.sensor).toMatchObject({ verdict: 'yes', kind: 'frozen' });

@@ -81,6 +81,16 @@ describe('a lane', () => {
     const heard = { from: at('2026-10-01T00:00Z'), to: at('2026-10-20T00:00Z'), count: 2, at: [NOW - 7200, NOW - 3600], gravity: [1.043, null], temperature: [18, 18] };
     expect(laneFigures(aLane({ assessment: null, entries: read, series: heard }), null, NOW, 'UTC')).toEqual({ gravity: '1.043', under: 'at 12:32' });
   });
+
+  it('while the float gives nothing shows where the judge last knew it to stand, or what was read by hand since', () => {
+    const judged = { at: at('2026-10-15T12:32Z'), value: 1.039 };
+    const heard = { from: at('2026-10-01T00:00Z'), to: at('2026-10-20T00:00Z'), count: 1, at: [NOW - 7200], gravity: [1.043], temperature: [18] };
+    const lane = aLane({ series: heard });
+    const silent = { ...lane, assessment: { ...lane.assessment!, gravity: null, last_gravity: judged } };
+    expect(laneFigures(silent, null, NOW, 'UTC')).toEqual({ gravity: '1.039', under: 'at 12:32' });
+    const read = aLane({ entries: [{ kind: 'reading', at: judged.at, gravity: 1.039 }] });
+    expect(laneFigures({ ...silent, entries: read.entries }, null, NOW, 'UTC')).toEqual({ gravity: '1.039', under: 'by hand 12:32' });
+  });
 });
 
 describe('the shelf', () => {
