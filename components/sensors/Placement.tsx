@@ -6,30 +6,16 @@ import { dayName } from '@/components/charts/zone';
 import { Button } from '@/components/ui/Button';
 import { Field, Select } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
+import { useAct } from '@/components/ui/use-act';
 import type { SensorBody, UpdateSensor } from '@/lib/contracts/sensors';
 import { useBatches } from '@/lib/client/batches';
-import { ClientError } from '@/lib/client/fetcher';
 import { updateSensor } from '@/lib/client/sensors';
 import { fromLocalInput, toLocalInput } from './numbers';
 
 /** One change of a sensor, with what is said while it runs and when it fails. */
 export function useSensorChange(id: string) {
-  const [busy, setBusy] = useState(false);
-  const [failed, setFailed] = useState<string | null>(null);
-  async function change(input: UpdateSensor): Promise<boolean> {
-    setBusy(true);
-    setFailed(null);
-    try {
-      await updateSensor(id, input);
-      return true;
-    } catch (error) {
-      setFailed(error instanceof ClientError ? error.message : 'Nothing was changed. Try again.');
-      return false;
-    } finally {
-      setBusy(false);
-    }
-  }
-  return { busy, failed, change };
+  const { busy, failed, fields, act } = useAct('Nothing was changed. Try again.');
+  return { busy, failed, fields, change: (input: UpdateSensor) => act(() => updateSensor(id, input)) };
 }
 
 /** `one`, `one and two`, `one, two and three`. */
@@ -75,7 +61,7 @@ export function Hanging({ sensor, mayAssign }: { sensor: SensorBody; mayAssign: 
 /** Which vessel it floats in: put in, moved, taken out. */
 export function Placement({ sensor, mayAssign, timeZone, now }: { sensor: SensorBody; mayAssign: boolean; timeZone: string; now: number }) {
   const { batches } = useBatches({ state: 'working' });
-  const { busy, failed, change } = useSensorChange(sensor.id);
+  const { busy, failed, fields, change } = useSensorChange(sensor.id);
   const [chosen, setChosen] = useState('');
   const [since, setSince] = useState('');
   const at = () => (since === '' ? {} : { since: fromLocalInput(since, timeZone) ?? undefined });
@@ -101,7 +87,7 @@ export function Placement({ sensor, mayAssign, timeZone, now }: { sensor: Sensor
           sensor.kind === 'room' && sensor.place !== null ? 'At no vessel of its own: it tells of the room.' : 'In no vessel. What it sends is kept and counts for no batch.'
         )}
       </p>
-      {failed && <FormError>{failed}</FormError>}
+      {failed && !fields.since && <FormError>{failed}</FormError>}
       {mayAssign && (
         <div className="flex flex-wrap items-end gap-2">
           <Select
@@ -119,7 +105,7 @@ export function Placement({ sensor, mayAssign, timeZone, now }: { sensor: Sensor
               </option>
             ))}
           </Select>
-          <Field label="since" type="datetime-local" value={since} max={now > 0 ? toLocalInput(now * 1000, timeZone) : undefined} onChange={(event) => setSince(event.target.value)} hint="left empty: now" className="w-full strip:w-60" />
+          <Field label="since" type="datetime-local" value={since} max={now > 0 ? toLocalInput(now * 1000, timeZone) : undefined} onChange={(event) => setSince(event.target.value)} error={fields.since} hint="left empty: now" className="w-full strip:w-60" />
           <Button disabled={busy || chosen === ''} onClick={() => void change({ batch_id: chosen, ...at() }).then(done)} className="mb-[22px]">
             {sensor.batch ? 'Move it' : 'Put it in'}
           </Button>

@@ -5,6 +5,8 @@ import { SensorDirectory, revokedSensors, hashSensorSecret, type SensorIdentity 
 import type { Actor } from '@/lib/auth/policies';
 import { ManualClock } from '@/lib/clock';
 import { at20 } from '@/lib/core/calibration/apply';
+import { createBatch as createBatchForm } from '@/lib/contracts/batches';
+import { createBatch } from '@/lib/services/batches/create';
 import { recalculate } from '@/lib/services/readings/recalculate';
 import { receiveReadings } from '@/lib/services/readings/receive';
 import { recordMessages } from '@/lib/services/readings/record';
@@ -199,10 +201,58 @@ describe('where a sensor was', () => {
     const { sensor: here } = await buildSensor({ batch, fromAt: new Date(NOW - 5 * DAY) });
     const { sensor: comes } = await buildSensor({ batch: elsewhere, fromAt: new Date(NOW - 4 * DAY) });
     await updateSensor(brewer, comes.identifier, { batch_id: null, since: iso(NOW - DAY) }, clock);
-    // It was elsewhere until a day ago, so it comes no sooner.
-    await updateSensor(brewer, comes.identifier, { batch_id: batch.id, since: iso(NOW - 3 * DAY) }, clock);
+    await updateSensor(brewer, comes.identifier, { batch_id: batch.id, since: iso(NOW - DAY) }, clock);
     expect((await listStays(brewer, comes.identifier)).items[0]).toMatchObject({ batch: { id: batch.id }, from: iso(NOW - DAY), to: null });
     expect((await listStays(brewer, here.identifier)).items).toMatchObject([{ batch: { id: batch.id }, from: iso(NOW - 5 * DAY), to: iso(NOW - DAY) }]);
+  });
+
+  it('is not forgotten or shifted by a time that does not go with it: that is said at its field', async () => {
+    const brewer = await buildMember('brewer');
+    const [first, batch] = [await buildBatch({ cellarId: brewer.cellarId, name: 'Oat stout' }), await buildBatch({ cellarId: brewer.cellarId, name: 'Crab cider' })];
+    const { sensor: here } = await buildSensor({ batch, fromAt: new Date(NOW - 2 * DAY), name: 'North float' });
+    const { sensor: comes } = await buildSensor({ batch: first, fromAt: new Date(NOW - 4 * DAY) });
+    const kept = async () => [...(await listStays(brewer, here.identifier)).items, ...(await listStays(brewer, comes.identifier)).items].map(({ batch: { name }, from, to }) => [name, from, to]);
+    const refused = async (batchId: string | null, since: number, says: string) => {
+      const before = await kept();
+      await expect(updateSensor(brewer, comes.identifier, { batch_id: batchId, since: iso(since) }, clock)).rejects.toMatchObject({ fields: { since: [says] } });
+      expect(await kept()).toEqual(before);
+    };
+    // Before it came to where it is.
+    await refused(null, NOW - 5 * DAY, 'came into Oat stout Mon 16 Mar 12:00: choose a later time');
+    await refused(batch.id, NOW - 5 * DAY, 'came into Oat stout Mon 16 Mar 12:00: choose a later time');
+    // Before the other float came, whose stay would be gone.
+    await refused(batch.id, NOW - 3 * DAY, 'North float came into Crab cider Wed 18 Mar 12:00: choose a later time');
+    // Before it came out of where it was last.
+    await updateSensor(brewer, comes.identifier, { batch_id: null, since: iso(NOW - DAY + 20_000) }, clock);
+    await refused(batch.id, NOW - 1.5 * DAY, 'was in Oat stout until Thu 19 Mar 12:00: choose that or later');
+    // The minute in which it came out is when it came out.
+    await updateSensor(brewer, comes.identifier, { batch_id: batch.id, since: iso(NOW - DAY) }, clock);
+    expect(await kept()).toEqual([
+      ['Crab cider', iso(NOW - 2 * DAY), iso(NOW - DAY + 20_000)],
+      ['Crab cider', iso(NOW - DAY + 20_000), null],
+      ['Oat stout', iso(NOW - 4 * DAY), iso(NOW - DAY + 20_000)],
+    ]);
+  });
+
+  it('may be told anew where it began too late or was never', async () => {
+    const brewer = await buildMember('brewer');
+    const batch = await buildBatch({ cellarId: brewer.cellarId });
+    const { sensor } = await buildSensor({ batch, fromAt: new Date(NOW - DAY) });
+    await updateSensor(brewer, sensor.identifier, { batch_id: batch.id, since: iso(NOW - 2 * DAY) }, clock);
+    expect((await listStays(brewer, sensor.identifier)).items).toMatchObject([{ from: iso(NOW - 2 * DAY), to: null }]);
+    await updateSensor(brewer, sensor.identifier, { batch_id: null, since: iso(NOW - 2 * DAY) }, clock);
+    expect((await listStays(brewer, sensor.identifier)).items).toEqual([]);
+  });
+
+  it('is kept where a batch is begun with its float, pitched before the float came to the other one', async () => {
+    const brewer = await buildMember('brewer');
+    const other = await buildBatch({ cellarId: brewer.cellarId });
+    const { sensor } = await buildSensor({ batch: other, fromAt: new Date(NOW - DAY) });
+    const begun = await createBatch(brewer, createBatchForm.parse({ name: 'Crab cider', kind: 'cider', vessel_kind: 'demijohn', volume_l: 4, vessel_l: 5, pitched_at: iso(NOW - 3 * DAY), original_gravity: 1.05, sensor: sensor.identifier }), clock);
+    expect((await listStays(brewer, sensor.identifier)).items).toMatchObject([
+      { batch: { id: begun.id }, from: iso(NOW), to: null },
+      { batch: { id: other.id }, from: iso(NOW - DAY), to: iso(NOW) },
+    ]);
   });
 
   it('is one batch at a time, whatever is asked at once', async () => {

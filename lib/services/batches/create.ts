@@ -53,7 +53,7 @@ export async function createBatch(actor: Actor, input: CreateBatch, clock: Clock
     }
     if (input.sensor !== null) {
       const sensor = await loadSensor(actor.cellarId, input.sensor, transaction);
-      const changed = await placeSensor(sensor, batch.id, pitchedAt ?? new Date(now), transaction);
+      const changed = await placeSensor(sensor, batch.id, { at: pitchedAt ?? new Date(now), said: false, now: new Date(now) }, transaction);
       for (const id of changed) await notifyChange({ cellar: actor.cellarId, kind: 'sensor', batch: id }, transaction);
     }
     await auditBy(actor, 'batch.created', batch.id, { name: input.name, sensor: input.sensor, must: input.must_version_id }, transaction);

@@ -9,7 +9,7 @@ import { loadBatch } from '../batches/load';
 import { notifyChange } from '../changes';
 import { notAhead } from '../not-ahead';
 import { getSensor } from './get';
-import { loadSensor, placeSensor, takeOut } from './place';
+import { loadSensor, mayLeave, placeSensor, takeOut } from './place';
 
 /** Puts a sensor in a batch or takes it out (a brewer's work); renames it or switches it off (the keeper's). */
 export async function updateSensor(actor: Actor, identifier: string, input: UpdateSensor, clock: Clock = systemClock): Promise<SensorBody> {
@@ -30,11 +30,12 @@ export async function updateSensor(actor: Actor, identifier: string, input: Upda
 
     const touched = new Set<string | null>([null]);
     if (input.batch_id === null) {
+      if (input.since !== undefined) await mayLeave(sensor, since, transaction);
       for (const id of await takeOut({ sensorId: sensor.id }, since, transaction)) touched.add(id);
     } else if (input.batch_id !== undefined) {
       const batch = await loadBatch(actor.cellarId, input.batch_id, transaction);
       if (batch.state === 'ended') throw new ConflictError('This batch has ended. Open it again first.');
-      for (const id of await placeSensor(sensor, batch.id, since, transaction)) touched.add(id);
+      for (const id of await placeSensor(sensor, batch.id, { at: since, said: input.since !== undefined, now }, transaction)) touched.add(id);
     }
     await auditBy(actor, 'sensor.updated', identifier, { ...input }, transaction);
     for (const batch of touched) await notifyChange({ cellar: actor.cellarId, kind: 'sensor', batch }, transaction);
