@@ -160,6 +160,8 @@ export function lookAgainTimes(now: number, timeZone: string, rest: Rest | null)
     .map((at) => ({ at, words: `${at >= tomorrow ? 'tomorrow ' : ''}${clock(at, timeZone)}` }));
 }
 
-/** How long it has been so, for the detail's head. */
-export const standsSince = (alert: AlertBody, now: number, timeZone: string): string =>
-  `since ${dayName(seconds(alert.since), timeZone)} ${clock(seconds(alert.since), timeZone)}, ${duration(now - seconds(alert.since))}`;
+/** How long it has been so, for the detail's head; of a silence the headline has said how long. */
+export function standsSince(alert: AlertBody, now: number, timeZone: string): string {
+  const since = `since ${dayName(seconds(alert.since), timeZone)} ${clock(seconds(alert.since), timeZone)}`;
+  return alert.kind === 'silent' ? since : `${since}, ${duration(now - seconds(alert.since))}`;
+}

@@ -28,9 +28,9 @@ async function house() {
   const guest = await buildMember('guest', { cellarId: cellar.id });
   const batch = await buildBatch({ cellarId: cellar.id, name: 'Oat stout', tag: 5 });
   const clock = new ManualClock(START);
-  const look = (calls: Partial<Record<'stalled' | 'temperature' | 'bottle' | 'neck' | 'sensor' | 'rack' | 'started', Call>>) =>
+  const look = (calls: Partial<Record<'stalled' | 'temperature' | 'bottle' | 'neck' | 'sensor' | 'rack' | 'started', Call>>, silenceCounts = true) =>
     inTransaction((transaction) =>
-      evaluateAlerts({ batch, cellar, assessment: assessmentWith(clock.now(), { calls }), context: { neck: batch.neck, events: [], silenceCounts: true }, at: clock.now() }, transaction),
+      evaluateAlerts({ batch, cellar, assessment: assessmentWith(clock.now(), { calls }), context: { neck: batch.neck, events: [], silenceCounts }, at: clock.now() }, transaction),
     );
   const stalled = () => look({ stalled: callWith('yes', { kind: 'cold', since: clock.now() - 5 * HOUR, headline: 'Stopped at 1.041: flat for 31 h.' }) });
   const mails = () => OutboxMail.findAll({ where: { cellarId: cellar.id }, order: ['id'] });
@@ -59,6 +59,15 @@ describe('an alert', () => {
       h.clock.advance(MINUTE);
     }
     expect((await list(h.keeper)).counts.open).toBe(1);
+    expect(await h.mails()).toHaveLength(2);
+  });
+
+  it('of a silent sensor says how long, also while the house itself was just away and the silence proves nothing', async () => {
+    const silent = (hours: number, counts: boolean) => h.look({ sensor: callWith('yes', { kind: 'silent', since: START - 7 * HOUR, headline: `Sensor silent ${hours} h.` }) }, counts);
+    await silent(7, true);
+    h.clock.advance(5 * HOUR);
+    await silent(12, false);
+    expect((await list(h.keeper)).items).toMatchObject([{ state: 'open', evidence: { headline: 'Sensor silent 12 h.' } }]);
     expect(await h.mails()).toHaveLength(2);
   });
 

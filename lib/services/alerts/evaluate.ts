@@ -59,7 +59,9 @@ export async function evaluateAlerts(judged: Judged, transaction: Transaction): 
       alert = await carryOut({ judged, rule, call, event, alert, hushed }, transaction);
       heard ||= !hushed;
     }
-    if (alert && call && look.type === 'true' && isUp(state) && !isDeepStrictEqual(alert.evidence, call)) {
+    // A silence that proves nothing of its sensor lasts all the same: the alert says no shorter one than the shelf.
+    const stands = look.type === 'true' || (state.phase === 'open' && alert?.kind === 'silent' && call?.kind === 'silent');
+    if (alert && call && stands && isUp(state) && !isDeepStrictEqual(alert.evidence, call)) {
       heard ||= alert.kind !== call.kind;
       seen ||= !isDeepStrictEqual(read(alert.evidence), read(call));
       await alert.update({ kind: call.kind, evidence: call }, { transaction });
