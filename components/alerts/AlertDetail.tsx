@@ -50,14 +50,15 @@ function ToldMark({ state }: { state: AlertBody['told'][number]['state'] }) {
 }
 
 function TakeForm({ alert, now, timeZone, rest, mayTake, mayClear, taking }: Omit<AlertDetailProps, 'onBack'>) {
-  // What can hurt someone wakes them anyway, and is looked at as soon as it should be.
-  const times = lookAgainTimes(now, timeZone, alert.level === 'act' ? null : rest);
   const [note, setNote] = useState('');
-  const [look, setLook] = useState('0');
+  // By the time itself: the list moves on while the page is open. Null: the first of them.
+  const [look, setLook] = useState<number | 'none' | null>(null);
+  // What can hurt someone wakes them anyway, and is looked at as soon as it should be.
+  const times = lookAgainTimes(now, timeZone, alert.level === 'act' ? null : rest, typeof look === 'number' ? look : null);
   const [failed, setFailed] = useState<string | null>(null);
   const [sending, setSending] = useState(false);
   const form = useRef<HTMLDivElement>(null);
-  const chosen = look === 'none' ? null : (times[Number(look)] ?? times[0] ?? null);
+  const chosen = look === 'none' ? null : (times.find(({ at }) => at === look) ?? times[0] ?? null);
 
   useEffect(() => {
     if (taking) form.current?.querySelector<HTMLElement>('input:checked')?.focus();
@@ -79,7 +80,7 @@ function TakeForm({ alert, now, timeZone, rest, mayTake, mayClear, taking }: Omi
     <div ref={form} className="flex flex-col gap-3">
       <TextField label="Say what you will do (others see it)" rows={2} maxLength={500} value={note} onChange={(event) => setNote(event.target.value)} />
       {alert.state === 'open' && mayTake && (
-        <Choice label="You look again" value={look} onChoose={setLook} options={[...times.map((time, index) => ({ value: String(index), name: time.words })), { value: 'none', name: 'not said' }]} />
+        <Choice label="You look again" value={chosen ? String(chosen.at) : 'none'} onChoose={(value) => setLook(value === 'none' ? value : Number(value))} options={[...times.map(({ at, words }) => ({ value: String(at), name: words })), { value: 'none', name: 'not said' }]} />
       )}
       {failed && <FormError>{failed}</FormError>}
       <div className="flex flex-wrap gap-2 [&>*]:flex-1">

@@ -139,8 +139,9 @@ export interface LookAgain {
  * evening, tomorrow. It rings at the hour that was chosen, so none lies in the
  * reader's quiet hours; what would comes when they are over.
  * @param rest the quiet hours and the clock they go by; null: none hold
+ * @param chosen stays on offer until it has passed, though time has moved the others on
  */
-export function lookAgainTimes(now: number, timeZone: string, rest: Rest | null): LookAgain[] {
+export function lookAgainTimes(now: number, timeZone: string, rest: Rest | null, chosen: number | null = null): LookAgain[] {
   const today = wallTime(now, timeZone);
   const on = (days: number, hour: number) => {
     const date = new Date(Date.UTC(today.year, today.month - 1, today.day + days));
@@ -154,9 +155,9 @@ export function lookAgainTimes(now: number, timeZone: string, rest: Rest | null)
   const soon = awake(Math.ceil((now + 2 * 3600) / half) * half);
   const fixed = [on(0, 9), on(0, 18), on(0, 21), on(1, 9), on(1, 18)].filter((at) => at > now + 3600 && Math.abs(at - soon) > half && awake(at) === at);
   const tomorrow = on(1, 0);
-  return [soon, ...fixed]
+  const offered = [soon, ...fixed].sort((a, b) => a - b).slice(0, 4);
+  return (chosen === null || chosen <= now || offered.includes(chosen) ? offered : [...offered, chosen])
     .sort((a, b) => a - b)
-    .slice(0, 4)
     .map((at) => ({ at, words: `${at >= tomorrow ? 'tomorrow ' : ''}${clock(at, timeZone)}` }));
 }
 

@@ -100,6 +100,15 @@ describe('when to look again', () => {
     expect(words('2026-12-03T18:50:00Z', 'Europe/Prague')[0]).toBe('tomorrow 05:30');
   });
 
+  it('keeps the time that was chosen on offer until it has passed, though the others move on', () => {
+    const chosen = lookAgainTimes(NOW, 'UTC', null)[0]!;
+    expect(chosen.words).toBe('17:00');
+    const later = (minutes: number) => lookAgainTimes(NOW + minutes * 60, 'UTC', null, chosen.at).map((time) => time.words);
+    expect(later(40)).toEqual(['17:00', '17:30', '21:00', 'tomorrow 09:00', 'tomorrow 18:00']);
+    expect(later(150)).not.toContain('17:00');
+    expect(lookAgainTimes(NOW, 'UTC', null, chosen.at)).toHaveLength(4);
+  });
+
   it('names tomorrow as such', () => {
     expect(lookAgainTimes(NOW, 'UTC', null).map((time) => time.words)).toEqual(['17:00', '18:00', '21:00', 'tomorrow 09:00']);
   });
