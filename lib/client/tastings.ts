@@ -44,10 +44,15 @@ export async function revokeShare(share: Pick<ShareBody, 'id' | 'batch'>): Promi
   await refreshShares(share.batch.id);
 }
 
+/** A page left open asks again this often; it has no live line. */
+const SHARED_AGAIN_MS = 60_000;
+
 /** The public page's own resource; the token in the address is all the leave there is. */
 export function useShared(token: string) {
-  const { data, ...rest } = useResource<SharedBatch>(`/share/${token}`);
-  return { shared: data, ...rest };
+  const path = `/share/${token}`;
+  const first = useResource<SharedBatch>(path, { revalidateOnFocus: false, revalidateOnReconnect: false });
+  const again = useResource<SharedBatch>(`${path}?again=true`, { revalidateOnMount: false, refreshInterval: SHARED_AGAIN_MS });
+  return { shared: again.data ?? first.data, error: again.error ?? first.error, retry: first.retry };
 }
 
 export async function tasteShared(token: string, input: z.input<typeof guestTasting>): Promise<void> {

@@ -5,7 +5,7 @@ import { compareQuery, compareSchema } from './compare';
 import { byId, endpoint } from './endpoint';
 import { labelFacts, labelQuery } from './labels';
 import { liftCaution, lotList, lotQuery, lotSchema, moveBottles, openBottles, placeForm, placeList, placeSchema, updateLot, updatePlaceForm } from './lots';
-import { byToken, createShare, sharedBatch, shareList, shareSchema, tastingTaken } from './shares';
+import { byToken, createShare, sharedBatch, sharedQuery, shareList, shareSchema, tastingTaken } from './shares';
 import { createTasting, guestTasting, tastingList, tastingSchema } from './tastings';
 
 /** The bottle and what comes after it. */
@@ -36,7 +36,7 @@ export const endpointsAfter = {
   listBatchShares: endpoint({ method: 'GET', path: '/batches/{id}/shares', summary: 'The share links of a batch', access: 'shares.manage', params: byId, response: shareList, status: 200 }),
   createShare: endpoint({ method: 'POST', path: '/batches/{id}/shares', summary: 'Make a share link: one batch, read only, until it expires or is revoked', access: 'shares.manage', params: byId, body: createShare, response: shareSchema, status: 201 }),
   revokeShare: endpoint({ method: 'DELETE', path: '/shares/{id}', summary: 'Revoke a share link', access: 'shares.manage', params: byId, response: null, status: 204 }),
-  getShared: endpoint({ method: 'GET', path: '/share/{token}', summary: 'The shared batch; the address is the key', access: 'anyone', params: byToken, response: sharedBatch, status: 200 }),
+  getShared: endpoint({ method: 'GET', path: '/share/{token}', summary: 'The shared batch; the address is the key', access: 'anyone', params: byToken, query: sharedQuery, response: sharedBatch, status: 200 }),
   tasteShared: endpoint({ method: 'POST', path: '/share/{token}/tastings', summary: 'A guest’s tasting note', access: 'anyone', params: byToken, body: guestTasting, response: tastingTaken, status: 201 }),
 
   getLabelFacts: endpoint({ method: 'GET', path: '/lots/{id}/label', summary: 'What the log has to say on a label', access: 'lots.read', params: byId, response: labelFacts, status: 200 }),

@@ -79,4 +79,6 @@ export const sharedBatch = z.object({
   expires_at: z.string(),
 });
 export type SharedBatch = z.infer<typeof sharedBatch>;
+/** `again`: the open page asks by itself, which is no look of anybody. */
+export const sharedQuery = z.object({ again: z.literal('true', 'is true or left out').optional() });
 export const tastingTaken = z.object({ id });

@@ -5,7 +5,7 @@ import { Entry } from '@/db/models';
 import { createJob as createJobForm } from '@/lib/contracts/jobs';
 import { createJob } from '@/lib/services/jobs/create';
 import { createMust } from '@/lib/services/musts/create';
-import { aLine, aSheet, ciderAt } from '../support/cellar';
+import { aLine, aSheet, ciderAt, readAt } from '../support/cellar';
 import { expectNoSidewaysScroll, useBrowser } from '../support/browser';
 import { useDatabase } from '../support/database';
 import { buildMember } from '../support/factories';
@@ -231,6 +231,15 @@ describe('a batch at work', () => {
     const address = await links.getByRole('link', { name: /\/share\// }).getAttribute('href');
     expect((await fetch(address!)).status).toBe(200);
 
+    // Left open elsewhere it shows what is read meanwhile, and says when it was revoked.
+    const guest = await browser.visit({ phone: true });
+    await guest.page.clock.install();
+    await guest.page.goto(address!);
+    await guest.page.getByText('1.000', { exact: true }).first().waitFor();
+    await readAt(batch, 0.998, Date.now());
+    await guest.page.clock.fastForward(61_000);
+    await guest.page.getByText('0.998', { exact: true }).first().waitFor();
+
     await page.reload();
     await page.route('**/api/v1/**', (route) => (route.request().method() === 'DELETE' ? route.abort() : route.continue()));
     await links.getByRole('button', { name: 'Revoke' }).click();
@@ -238,6 +247,9 @@ describe('a batch at work', () => {
     await page.unroute('**/api/v1/**');
     await links.getByRole('button', { name: 'Revoke' }).click();
     await links.getByRole('link', { name: /\/share\// }).waitFor({ state: 'hidden' });
+    await guest.page.clock.fastForward(61_000);
+    await guest.page.getByRole('heading', { name: 'This link no longer opens anything' }).waitFor();
+    await guest.context.close();
     await expectNoSidewaysScroll(page);
     await context.close();
   });

@@ -124,7 +124,7 @@ describe('the gravity that is told of a batch', () => {
     const token = link.url!.split('/').at(-1)!;
     const told = async () => {
       await assessBatch(batch.id, { clock });
-      const [drink, bench, shared] = [await getDrink(keeper, batch.id, clock), (await getBench(keeper, batch.id, clock)).drink, await getShared(token, clock)];
+      const [drink, bench, shared] = [await getDrink(keeper, batch.id, clock), (await getBench(keeper, batch.id, clock)).drink, await getShared(token, { clock })];
       expect(bench.gravity).toBe(drink.gravity);
       expect(shared.gravity).toBe(drink.gravity);
       expect(drink.gravity).toBeCloseTo(await page(), 5);

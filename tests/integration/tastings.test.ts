@@ -61,7 +61,7 @@ describe('tasting notes', () => {
     const share = await createShare(brewer, batch.id, shareForm.parse({}), clock);
     await tasteShared(tokenOf(share.url), guestTasting.parse({ lot_id: lot.id, sparkle: 'gushing' }), '203.0.113.9', clock);
     expect(await Job.count({ where: { lotId: lot.id, kind: 'pressure', doneAt: null } })).toBe(1);
-    expect((await getShared(tokenOf(share.url), clock)).lots[0]).toMatchObject({ caution: true });
+    expect((await getShared(tokenOf(share.url), { clock })).lots[0]).toMatchObject({ caution: true });
   });
 
   it('say something, in the ranges of the sheet', () => {
@@ -75,11 +75,14 @@ describe('a share link', () => {
     const { batch, lot } = await aLot(brewer);
     await createTasting(brewer, lot.id, note({ score: 7, words: 'Clean.', next_time: 'Rack sooner.' }), clock);
     const share = await createShare(brewer, batch.id, shareForm.parse({}), clock);
-    const page = await getShared(tokenOf(share.url), clock);
+    const page = await getShared(tokenOf(share.url), { clock });
     expect(page).toMatchObject({ name: 'Orchard cider', called: 'cider', by: null, takes_tastings: true, lots: [{ code: lot.code, tastings: { count: 1 } }] });
     const text = JSON.stringify(page);
     for (const secret of ['Ada', 'Kessel', 'Petra', 'stairs', 'Rack sooner', brewer.personId, brewer.cellarId, batch.id]) expect(text).not.toContain(secret);
     expect((await listShares(brewer, batch.id, clock)).items[0]).toMatchObject({ looked_at: 1, open: true });
+    // A page that is left open asks again by itself, and nobody looks.
+    for (let minute = 2; minute < 5; minute += 1) await getShared(tokenOf(share.url), { clock: clockAt(NOON + minute * 60_000), again: true });
+    expect((await listShares(brewer, batch.id, clock)).items[0]).toMatchObject({ looked_at: 1 });
   });
 
   it('names the sharer where they chose it, and of the tasters those who chose it', async () => {
@@ -89,7 +92,7 @@ describe('a share link', () => {
     await createTasting(shy, lot.id, note({ words: 'Good.' }), clock);
     await createTasting(brewer, lot.id, note({ words: 'Better.', show_name: true }), clock);
     const share = await createShare(brewer, batch.id, shareForm.parse({ show_people: true }), clock);
-    const page = await getShared(tokenOf(share.url), clock);
+    const page = await getShared(tokenOf(share.url), { clock });
     expect(page.by).toBe('Ada Kessel');
     expect(page.lots[0]!.words.map((item) => item.by).sort()).toEqual(['Ada Kessel', null]);
     expect(JSON.stringify(page)).not.toContain('Shy');
@@ -100,12 +103,12 @@ describe('a share link', () => {
     const { batch } = await aLot(brewer);
     const share = await createShare(brewer, batch.id, shareForm.parse({ expires_in_days: 2 }), clock);
     const token = tokenOf(share.url);
-    await expect(getShared(token, clockAt(NOON + 2 * DAY - HOUR))).resolves.toBeTruthy();
-    await expect(getShared(token, clockAt(NOON + 2 * DAY + HOUR))).rejects.toBeInstanceOf(NotFoundError);
+    await expect(getShared(token, { clock: clockAt(NOON + 2 * DAY - HOUR) })).resolves.toBeTruthy();
+    await expect(getShared(token, { clock: clockAt(NOON + 2 * DAY + HOUR) })).rejects.toBeInstanceOf(NotFoundError);
     expect((await listShares(brewer, null, clockAt(NOON + 3 * DAY))).items[0]).toMatchObject({ open: false, url: null });
     const again = await createShare(brewer, batch.id, shareForm.parse({}), clock);
     await revokeShare(brewer, again.id, clock);
-    await expect(getShared(tokenOf(again.url), clock)).rejects.toBeInstanceOf(NotFoundError);
+    await expect(getShared(tokenOf(again.url), { clock })).rejects.toBeInstanceOf(NotFoundError);
     await expect(tasteShared(tokenOf(again.url), guestTasting.parse({ lot_id: crypto.randomUUID(), score: 5 }), 'x', clock)).rejects.toBeInstanceOf(NotFoundError);
     // The database alone does not give the address away.
     const row = await Share.findByPk(again.id, { rejectOnEmpty: true });

@@ -22,7 +22,7 @@ import { summaryOf } from '../tastings/summary';
 import { writeTasting } from '../tastings/write';
 
 const SERIES_POINTS = 300;
-/** Looks are counted once in a while, so that a page left open does not write all day. */
+/** Looks are counted once in a while: one that is loaded over and over is one. */
 const LOOK_EVERY_MS = 60_000;
 /** Notes by one address on one link: a party's worth, then a wait. */
 const BY_ADDRESS = { free: 20, firstWaitS: 60, mostWaitS: 3600 };
@@ -41,11 +41,17 @@ async function openShare(token: string, now: number): Promise<Share> {
   return share;
 }
 
+interface Look {
+  clock?: Clock;
+  /** The open page asks by itself: nobody has looked. */
+  again?: boolean;
+}
+
 /** One batch for whoever has the address: figures and curve, no text of the log, and no names but those that were given. */
-export async function getShared(token: string, clock: Clock = systemClock): Promise<SharedBatch> {
+export async function getShared(token: string, { clock = systemClock, again = false }: Look = {}): Promise<SharedBatch> {
   const now = clock.now();
   const share = await openShare(token, now);
-  if (!share.lastLookedAt || now - share.lastLookedAt.getTime() > LOOK_EVERY_MS) await share.update({ lookedAt: share.lookedAt + 1, lastLookedAt: new Date(now) });
+  if (!again && (!share.lastLookedAt || now - share.lastLookedAt.getTime() > LOOK_EVERY_MS)) await share.update({ lookedAt: share.lookedAt + 1, lastLookedAt: new Date(now) });
   const batch = await Batch.findByPk(share.batchId, { rejectOnEmpty: true });
   const state = await drinkState(batch, new Date(now));
   const abv = state.strength?.balling.value ?? null;
