@@ -129,10 +129,10 @@ export async function dropHeld(alertId: string, at: Date, why: string, transacti
   });
 }
 
-/** A mute has ended before its time: what it held is looked at again now. */
-export async function releaseMuted(batchId: string, at: Date, transaction: Transaction): Promise<void> {
+/** A vessel is muted, or no longer: what waits, for it or for the quiet hours, is looked at again now. */
+export async function askMutedAgain(batchId: string, at: Date, transaction: Transaction): Promise<void> {
   await database().query(
-    `update outbox o set next_attempt_at = $at from alerts a where a.id = o.alert_id and a.batch_id = $batchId and o.held_by = 'mute' and o.sent_at is null and o.failed_at is null`,
+    `update outbox o set next_attempt_at = $at from alerts a where a.id = o.alert_id and a.batch_id = $batchId and o.held_by in ('mute', 'quiet') and o.sent_at is null and o.failed_at is null`,
     { bind: { batchId, at }, transaction },
   );
 }

@@ -34,7 +34,7 @@ export function touches(change: Pick<Change, 'kind' | 'batch'>): (path: string) 
     case 'batch':
       return (path) => batch(path) || shelf(path) || isPath('/batches')(path);
     case 'alert':
-      return (path) => isPath('/alerts')(path) || shelf(path) || isPath('/batches')(path) || (change.batch ? isPath(`/batches/${change.batch}`)(path) : false);
+      return (path) => isPath('/alerts')(path) || isPath('/mutes')(path) || isPath('/messages')(path) || shelf(path) || isPath('/batches')(path) || (change.batch ? isPath(`/batches/${change.batch}`)(path) : false);
     case 'sensor':
       return (path) => path.startsWith('/sensors') || isPath('/sensor-health')(path) || shelf(path) || batch(path);
     case 'must':

@@ -295,6 +295,21 @@ describe('mutes', () => {
     expect(cellar.lines.map((line) => line.slice(0, 5))).toEqual(['14:00', '14:00', '14:00']);
   });
 
+  it('say of what waits for quiet hours that it waits longer', async () => {
+    await quiet('Una', { from: 11 * 60, to: 13 * 60 });
+    cellar.set(['stall']);
+    await cellar.run(at('12:10'));
+    const una = async () => (await openAlert()).told.find(({ person }) => person.startsWith('Una'));
+    expect(await una()).toMatchObject({ state: 'held', held_by: 'quiet', due: '2027-05-01T13:00:00.000Z' });
+    await mute(at('18:00'));
+    await cellar.run(at('12:20'));
+    expect(await una()).toMatchObject({ state: 'held', held_by: 'mute', due: '2027-05-01T18:00:00.000Z' });
+    const { id } = (await listMutes(actor('Una'), { clock: cellar.clock })).items[0]!;
+    await endMute(actor('Piet'), id, { clock: cellar.clock });
+    await cellar.run(at('12:25'));
+    expect(await una()).toMatchObject({ state: 'held', held_by: 'quiet', due: '2027-05-01T13:00:00.000Z' });
+  });
+
   it('do not touch another vessel, or another cellar', async () => {
     const other = await buildBatch({ cellarId: cellar.cellar.id, name: 'Perry' });
     await mute(at('18:00'));

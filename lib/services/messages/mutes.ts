@@ -1,7 +1,7 @@
 import type { z } from 'zod';
 import { inTransaction } from '@/db/client';
 import { endMute as endRow, muteBatch as muteRow, mutesOf, type MuteRow } from '@/db/queries/mutes';
-import { releaseMuted } from '@/db/queries/outbox';
+import { askMutedAgain } from '@/db/queries/outbox';
 import { authorize } from '@/lib/auth/authorize';
 import type { Actor } from '@/lib/auth/policies';
 import { systemClock, type Clock } from '@/lib/clock';
@@ -36,8 +36,8 @@ export async function muteBatch(actor: Actor, batchId: string, { until }: z.infe
   return inTransaction(async (transaction) => {
     await loadBatch(actor.cellarId, batchId, transaction);
     const row = await muteRow({ cellarId: actor.cellarId, batchId, personId: actor.personId, at: new Date(now), until: end }, transaction);
-    // A shorter mute in place of a longer one lets go of what that one held.
-    await releaseMuted(batchId, new Date(now), transaction);
+    // A shorter mute in place of a longer one lets go of what that one held; what waits for the end of quiet hours may wait longer.
+    await askMutedAgain(batchId, new Date(now), transaction);
     await auditBy(actor, 'batch.muted', batchId, { until }, transaction);
     await notifyChange({ cellar: actor.cellarId, kind: 'alert', batch: batchId }, transaction);
     return presentMute(row);
@@ -51,7 +51,7 @@ export async function endMute(actor: Actor, id: string, { clock = systemClock }:
     const at = new Date(clock.now());
     const batchId = await endRow(actor.cellarId, id, actor.personId, at, transaction);
     if (batchId === null) throw new NotFoundError('mute');
-    await releaseMuted(batchId, at, transaction);
+    await askMutedAgain(batchId, at, transaction);
     await auditBy(actor, 'batch.unmuted', batchId, {}, transaction);
     await notifyChange({ cellar: actor.cellarId, kind: 'alert', batch: batchId }, transaction);
   });

@@ -23,8 +23,8 @@ describe('what a change makes a page ask for again', () => {
     expect(asked('entry', `/batches/${OTHER}/entries`)).toBe(false);
   });
 
-  it('an alert: the alerts, and the batch that shows it', () => {
-    for (const path of ['/alerts', '/alerts?state=open', `/batches/${BATCH}`, '/shelf']) expect(asked('alert', path), path).toBe(true);
+  it('an alert or a mute: the alerts, what is muted, and the batch that shows it', () => {
+    for (const path of ['/alerts', '/alerts?state=open', '/mutes', '/messages', `/batches/${BATCH}`, '/shelf']) expect(asked('alert', path), path).toBe(true);
     expect(asked('alert', `/batches/${BATCH}/series`)).toBe(false);
   });
 });
