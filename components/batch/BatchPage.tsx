@@ -227,6 +227,7 @@ function leadOf(row: CallRow, batchId: string, may: { bench: boolean; work: bool
 /** The button that logs what the first call asks for. */
 function doneAct(row: CallRow, batch: BatchBody, open: (kind: EntryKind, neck?: EntryDraft['neck']) => void, mayAlter: boolean): DoneAct | null {
   if (row.name === 'neck' && row.state === 'Due') return { word: 'Swapped', onDone: () => open('neck', 'airlock') };
+  if (row.name === 'neck' && (row.state === 'Now' || row.state === 'Stop') && batch.neck === 'bung') return { word: 'Bung is out', onDone: () => open('neck') };
   if (row.name === 'neck' && (row.state === 'Now' || row.state === 'Stop') && batch.neck !== 'blow_off') return { word: 'Tube is on', onDone: () => open('neck', 'blow_off') };
   if (row.name === 'rack' && row.state === 'Ready' && mayAlter) return { word: 'Racked', onDone: () => open('rack') };
   return null;

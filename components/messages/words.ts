@@ -7,7 +7,7 @@ type Rule = MessagesBody['rules'][number];
 /** What each rule watches, as its row is named. */
 export const RULE_TITLES: Record<Rule['rule'], string> = {
   refermentation: 'Falls again after it was finished',
-  foam: 'Foam at an airlock or a bung',
+  foam: 'Foam at an airlock, a bung on what works',
   overdue: 'A start that is overdue',
   stalled: 'A fall that is slow or stopped',
   temperature: 'Too warm or too cold',

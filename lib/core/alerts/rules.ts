@@ -59,7 +59,7 @@ export const ALERT_RULES: readonly AlertRule[] = [
   {
     // A blow-off tube is made for foam, and an open vessel cannot be blocked: there foam is no news.
     ...ANY, ...ACT, name: 'foam', call: 'neck', verdicts: ['hold'], necks: ['airlock', 'bung'], forMs: 15 * MINUTE, keepMs: 3 * HOUR, freshMs: 6 * HOUR,
-    when: 'foam may reach an airlock or a bung', until: null,
+    when: 'foam may reach an airlock, or a bung is on a vessel that works', until: null,
   },
   {
     ...ANY, ...KNOW, name: 'neck', call: 'neck', verdicts: ['yes'], necks: ['blow_off'], forMs: HOUR, keepMs: 3 * HOUR, freshMs: 12 * HOUR,

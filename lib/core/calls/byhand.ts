@@ -3,7 +3,7 @@ import { gasLPerH, VOLUMES_PER_POINT } from '../gas/gas';
 import { HAND_MOST, handRecord, type HandRecord } from '../stages/byhand';
 import { OVERDUE_H } from '../stages/watch';
 import { foamSeen, standsHigh } from './foam';
-import { leaveOn } from './neck';
+import { closedCall, leaveOn, MAY_WORK } from './neck';
 import { racked } from './rack';
 import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, gasWords, gravityWords, pointsWords, rateWords, spanWords } from './words';
@@ -58,10 +58,19 @@ function started(scene: Scene, record: HandRecord): Call {
 /** Share of the fall after which the strong foam is over (ours). */
 const PAST_FOAM = 0.4;
 
+/** The pace between two readings holds so long after the last, h (ours). */
+const PACE_HOLDS_H = 72;
+
 function neck(scene: Scene, record: HandRecord): Call {
   const { watch } = scene;
   const limit = watch.swapGas();
-  if (watch.neck === 'airlock' || watch.neck === 'bung') return call('no', watch.neck === 'airlock' ? 'Airlock is on already.' : 'Bung is in already.', 'Look at it now and then.', { since: sinceOf(scene, watch.neckSince) });
+  if (watch.neck === 'airlock' || watch.neck === 'bung') {
+    const fresh = scene.hour - record.last.hour <= PACE_HOLDS_H;
+    const since = sinceOf(scene, watch.neckSince);
+    if (watch.neck === 'airlock') return call('no', 'Airlock is on already.', 'Look at it now and then.', { since });
+    const done = record.most !== null && record.most.points < HAND_MOST;
+    return closedCall(scene, record.started === 'yes' && !done && fresh, record.rate) ?? call('no', 'Bung is in already.', 'Look at it now and then.', { since, act: done ? null : MAY_WORK });
+  }
   if (record.started !== 'yes') return call(record.started === 'unknown' ? 'unknown' : 'no', 'Leave the tube on.', 'Not seen working yet; the strong gas is still to come.');
   const { rate } = record;
   const gas = rate ? gasLPerH(rate.value + 1.28 * rate.sd, watch.setup.volumeL) : null;

@@ -3,9 +3,29 @@ import { gasLPerH } from '../gas/gas';
 import { GAS_BAND } from '../stages/peak';
 import { foamSeen, standsHigh, type SeenFoam } from './foam';
 import { later, sinceOf, when, type Scene } from './scene';
-import { call, evidence, gasWords } from './words';
+import { call, evidence, gasWords, rateWords } from './words';
 
-/** `yes`: swap the blow-off tube for an airlock. `hold`: foam may reach the neck, leave the tube. */
+/** A fall beyond doubt that is more than this makes gas that a closed vessel must not keep, points a day (ours). */
+const WORKS_PER_DAY = 0.2;
+const Z80 = 1.2816;
+
+/** A bung on a vessel that works, which can break it; null where it has none, or has not been seen to work. */
+export function closedCall(scene: Scene, started: boolean, rate: { value: number; sd: number } | null): Call | null {
+  const { watch, gas } = scene;
+  const atRest = (watch.terminal.on || watch.ended.on) && !watch.refermenting.on;
+  if (watch.neck !== 'bung' || !started || atRest || rate === null || rate.value - Z80 * rate.sd <= WORKS_PER_DAY) return null;
+  const limit = watch.swapGas();
+  const foamy = (gas !== null && gas.lo > GAS_BAND * limit) || standsHigh(foamSeen(watch.setup.events, scene.at));
+  return call('hold', 'Take the bung out: it still works.', `It falls ${rateWords(rate.value)}; the gas has no way out, and its pressure can break the glass.`, {
+    kind: 'closed',
+    since: sinceOf(scene, watch.neckSince),
+    evidence: [evidence('fall', rate.value, WORKS_PER_DAY, 'points/d')],
+    act: `Ease it out now, turned away from faces. ${foamy ? 'Put the blow-off tube on.' : 'Fit an airlock with water in it.'}`,
+    changesIt: 'Changes it: an airlock or a tube on it, or a fall that has ended.',
+  });
+}
+
+/** `yes`: swap the blow-off tube for an airlock. `hold`: foam may reach the neck, leave the tube; or a bung keeps the gas in. */
 export function neckCall(scene: Scene): Call {
   const { watch, gas } = scene;
   const limit = watch.swapGas();
@@ -13,9 +33,11 @@ export function neckCall(scene: Scene): Call {
   const changesIt = `Changes it: gas ${gasWords(limit)} for nine hours.`;
   const foam = foamSeen(watch.setup.events, scene.at);
   if (watch.neck === 'airlock' || watch.neck === 'bung') {
+    const closed = closedCall(scene, watch.started.on, scene.rate);
+    if (closed) return closed;
     const busy = gas !== null && gas.lo > GAS_BAND * limit;
     if (foam?.foam === 'at_neck') {
-      return call('hold', 'Foam is at the airlock.', `${foamWords(scene, foam)}${gas ? ` Gas ${gasWords(gas.value)}.` : ''}`, { since: foam.at, evidence: figures, act: 'Put the blow-off tube back on.', changesIt: 'Changes it: foam down to a ring.' });
+      return call('hold', `Foam is at the ${watch.neck}.`, `${foamWords(scene, foam)}${gas ? ` Gas ${gasWords(gas.value)}.` : ''}`, { since: foam.at, evidence: figures, act: 'Put the blow-off tube back on.', changesIt: 'Changes it: foam down to a ring.' });
     }
     if (busy) {
       return call('hold', 'Foam may reach the airlock.', `Gas ${gasWords(gas.value)}; an airlock here is safe under ${gasWords(limit)}.`, {
@@ -27,7 +49,7 @@ export function neckCall(scene: Scene): Call {
     return call('no', watch.neck === 'airlock' ? 'Airlock is on already.' : 'Bung is in already.', gas ? `Gas ${gasWords(gas.value)}, limit ${gasWords(limit)}.` : 'No gas figure now.', {
       since: sinceOf(scene, watch.neckSince),
       evidence: figures,
-      act: watch.neck === 'bung' && gas !== null && gas.hi > 0.02 ? 'Never stop a vessel that works: fit an airlock.' : null,
+      act: watch.neck === 'bung' && !watch.bottle.on && (gas === null || gas.hi > 0.02) ? MAY_WORK : null,
     });
   }
   if (watch.airlock.on) {
@@ -63,6 +85,9 @@ export function neckCall(scene: Scene): Call {
     changesIt,
   });
 }
+
+/** For a bung where it is not known that nothing comes any more. */
+export const MAY_WORK = 'Never stop a vessel that works: while it may, fit an airlock.';
 
 const SEEN: Record<Foam, string> = { none: 'No foam was seen', ring: 'A ring of foam stood', cover: 'Foam covered the drink', at_neck: 'Foam stood at the neck' };
 

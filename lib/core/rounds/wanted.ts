@@ -59,7 +59,8 @@ type Sketch = RoundsInput['calls'][CallName];
 const JOB_OF_CALL: Record<CallName, (call: Sketch, input: RoundsInput) => Pick<Wanted, 'kind' | 'title' | 'exact'> | null> = {
   started: (call, { name }) => (call.verdict === 'hold' ? { kind: 'start', title: `Look at ${name}: it should work by now`, exact: false } : null),
   neck: (call, { name, neck }) => {
-    if (call.verdict === 'hold') return neck === 'airlock' || neck === 'bung' ? { kind: 'neck', title: `Put the tube on ${name}`, exact: true } : null;
+    if (call.verdict === 'hold' && neck === 'bung') return { kind: 'neck', title: `Take the bung out of ${name}`, exact: true };
+    if (call.verdict === 'hold') return neck === 'airlock' ? { kind: 'neck', title: `Put the tube on ${name}`, exact: true } : null;
     if (neck !== 'blow_off') return null;
     return call.verdict === 'yes' || (call.verdict === 'soon' && call.expectedAt !== null) ? { kind: 'neck', title: `Swap the tube on ${name} for an airlock`, exact: false } : null;
   },

@@ -65,6 +65,20 @@ describe('the calls', () => {
     expect(swapped).toMatchObject({ verdict: 'no', headline: 'Airlock is on already.' });
   });
 
+  it('want a bung out of a vessel that works, by float or by hand, and leave it where nothing comes any more', () => {
+    const bung = (days: number): BatchEvent => ({ at: PITCH + days * DAY, kind: 'neck', neck: 'bung' });
+    const works = at(4, record(4, cider), { events: [bung(3.5)] }).calls.neck;
+    expect(works).toMatchObject({ verdict: 'hold', kind: 'closed', headline: 'Take the bung out: it still works.', since: PITCH + 3.5 * DAY });
+    expect(works.act).toMatch(/away from faces/);
+    expect(at(40, record(40, cider), { events: [bung(39)] }).calls.neck).toMatchObject({ verdict: 'no', headline: 'Bung is in already.', act: null });
+    // Gone silent, nobody knows that it is over.
+    expect(at(6, record(4, cider), { events: [bung(5)] }).calls.neck).toMatchObject({ verdict: 'no', act: expect.stringMatching(/^Never stop a vessel/) });
+    const read = (day: number): BatchEvent => ({ kind: 'reading', at: PITCH + day * DAY, gravity: 1 + cider(day) / 1000 });
+    expect(at(4.2, [], { events: [read(2), read(4), bung(4.1)] }).calls.neck).toMatchObject({ verdict: 'hold', kind: 'closed' });
+    expect(at(20, [], { events: [read(2), read(4), bung(4.1)] }).calls.neck).toMatchObject({ verdict: 'no', act: expect.stringMatching(/^Never stop a vessel/) });
+    expect(at(4, record(4, cider), { events: [{ at: PITCH + 3.5 * DAY, kind: 'neck', neck: 'airlock' }] }).calls.neck.kind).toBeNull();
+  });
+
   it('see that the peak is over, and ask for the airlock, though the float was silent or stuck meanwhile', () => {
     let over = 0;
     for (let day = 0; day < 12; day += 0.25) if (cider(day) - cider(day + 0.25) > cider(over) - cider(over + 0.25)) over = day;

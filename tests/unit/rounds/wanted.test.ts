@@ -21,6 +21,7 @@ describe('the jobs a batch wants', () => {
 
   it('say what to do about a neck, and when', () => {
     expect(titles({ neck: { verdict: 'hold', since: AT } }, { neck: 'airlock' })).toEqual(['Put the tube on Perry']);
+    expect(titles({ neck: { verdict: 'hold', since: AT } }, { neck: 'bung' })).toEqual(['Take the bung out of Perry']);
     // A tube is made for foam.
     expect(titles({ neck: { verdict: 'hold', since: AT } })).toEqual([]);
     expect(wantedJobs(input({ neck: { verdict: 'soon', expectedAt: AT + DAY } }))).toMatchObject([{ title: 'Swap the tube on Perry for an airlock', dueAt: AT + DAY, exact: false }]);
