@@ -217,7 +217,7 @@ describe('what is done to a drink', () => {
 
 describe('a batch at work', () => {
   it('is shared from its page, says at the field what is wrong, and tells of a link that could not be revoked', async () => {
-    const batch = await ciderAt(brewer, { batch: { name: 'Early windfall' } });
+    const batch = await ciderAt(brewer, { readDaysAgo: [], batch: { name: 'Early windfall' } });
     const { page, context } = await visit({ phone: true });
     await open(page, `/batches/${batch.id}`);
     const links = page.getByRole('region', { name: 'Share links' });
@@ -235,10 +235,13 @@ describe('a batch at work', () => {
     const guest = await browser.visit({ phone: true });
     await guest.page.clock.install();
     await guest.page.goto(address!);
-    await guest.page.getByText('1.000', { exact: true }).first().waitFor();
+    await guest.page.getByText('not known', { exact: true }).first().waitFor();
     await readAt(batch, 0.998, Date.now());
     await guest.page.clock.fastForward(61_000);
     await guest.page.getByText('0.998', { exact: true }).first().waitFor();
+    // The picture that came with it is as wide as the page.
+    await guest.page.getByRole('img', { name: /^Gravity fell/ }).waitFor();
+    await expect.poll(() => guest.page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth)).toBe(0);
 
     await page.reload();
     await page.route('**/api/v1/**', (route) => (route.request().method() === 'DELETE' ? route.abort() : route.continue()));
