@@ -76,6 +76,12 @@ describe('the calls on simulated batches', () => {
     }
   });
 
+  it('tell most people a date when a quarter of the time has passed, and hold its interval', () => {
+    const forecast = summary.forecasts['25']!;
+    expect(forecast.dated).toBeGreaterThan(0.7);
+    expect(forecast.dateIn80).toBeGreaterThan(0.75);
+  });
+
   it('come through with what people tell wrongly', () => {
     const mistold = newScore();
     for (const batch of catalogue(SEEDS[0]!, few(MISTOLD_GROUPS))) addCase(mistold, batch, new Truths(batch), lookAt(batch, PITCHED));

@@ -34,7 +34,7 @@ export interface Summary {
   stuckBatches: number;
   wrongStuck: number;
   wrongAirlock: number;
-  forecasts: Record<string, { n: number; fgMae: number; in80: number; in95: number; width80: number; dateMedian: number; dateMean: number; dateIn80: number }>;
+  forecasts: Record<string, { n: number; fgMae: number; in80: number; in95: number; width80: number; dated: number; dateMedian: number; dateMean: number; dateIn80: number }>;
   rackDateMae: number;
   rateRmse: number;
 }
@@ -68,6 +68,7 @@ export function summarise(score: Score): Summary {
           in80: f.in80 / n,
           in95: f.in95 / n,
           width80: mean(f.width80),
+          dated: f.dates / n,
           dateMedian: quantile(f.dateError, 0.5),
           dateMean: mean(f.dateError),
           dateIn80: f.dateIn80 / f.dates,
@@ -122,6 +123,7 @@ export function tables(ours: Summary, naive: Summary): string {
   row('final gravity, mean error, points: ours', (f) => two(f.fgMae), ours);
   row('80 % / 95 % interval holds', (f) => `${two(f.in80)}/${two(f.in95)}`, ours);
   row('width of the 80 % interval, points', (f) => one(f.width80), ours);
+  row('share of the batches that are told a date', (f) => two(f.dated), ours);
   row('date of the end, median error, d: thumb', (f) => two(f.dateMedian), naive);
   row('date of the end, median error, d: ours', (f) => two(f.dateMedian), ours);
   row('date of the end, mean error, d: ours', (f) => two(f.dateMean), ours);
