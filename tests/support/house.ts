@@ -25,8 +25,9 @@ function inTime<T>(name: string, ended: Promise<T>): Promise<T> {
 
 export async function startHouse(databaseUrl: string): Promise<House> {
   const folder = await mkdtemp(join(tmpdir(), 'fallbright-house-'));
-  const [mqttPort, smtpPort, mailboxPort] = [await freePort(20_000), await freePort(26_000), await freePort(14_000)];
   const web = await startWeb({ databaseUrl, variables: { DATA_DIR: folder } });
+  // Only now: while the web server starts, another suite would take them.
+  const [mqttPort, smtpPort, mailboxPort] = [await freePort(20_000), await freePort(26_000), await freePort(14_000)];
   const variables = {
     DATABASE_URL: databaseUrl,
     DATA_DIR: folder,
