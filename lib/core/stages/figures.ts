@@ -133,8 +133,11 @@ export class Figures {
   /** Where it last was known to stand, points, while the float gives nothing: by its last sound word, or by the hydrometer since. */
   lastKnown(): { hour: number; points: number } | null {
     const { bins } = this.track;
-    const sound = this.track.lastSound(this.lookedAt);
-    const end = Math.floor(sound) + 1;
+    const bin = this.track.lastSound(this.lookedAt);
+    const end = Math.floor(bin) + 1;
+    // A bin stands at the middle of its readings; the last word is the latest of them.
+    const last = this.track.lastReading(Math.min(end, this.lookedAt));
+    const sound = last ? Math.max(bin, this.track.hourOf(last.at)) : bin;
     const from = Math.max(end - 24, this.segment.restarted ? this.segment.from + 1 : -48);
     const points = bins.n === 0 ? null : this.levelAt(sound, end, end - from < 0.6 * 24 ? null : this.track.line(from, end));
     const hand = this.handReadings.at(-1);
