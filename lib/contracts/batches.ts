@@ -134,6 +134,8 @@ export const entryDetail = z.object({
   said: z.object({ verdict: z.enum(VERDICTS), kind: z.string().max(40).nullable(), headline: z.string().max(300) }).nullable().optional(),
   /** Taken for the original gravity that nobody had told. Set by the program. */
   as_original_gravity: z.boolean().nullable().optional(),
+  /** What closed the neck before the first change that the log tells of. Set by the program. */
+  neck_before: z.enum(NECKS).nullable().optional(),
   ph: measure(2, 8, ''),
   titratable_acid_g_per_l: measure(0, 30, 'g/L'),
   free_sulphite_mg_l: measure(0, 500, 'mg/L'),

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { Batch, Entry } from '@/db/models';
 import { createEntry as entryForm, updateEntry as updateForm } from '@/lib/contracts/batches';
+import { updateBatch } from '@/lib/services/batches/update';
 import { createEntry } from '@/lib/services/entries/create';
 import { listEntries } from '@/lib/services/entries/list';
 import { removeEntry } from '@/lib/services/entries/remove';
@@ -52,6 +53,28 @@ describe('an original gravity that nobody told', () => {
     const entry = await createEntry(told.brewer, told.batch.id, log({ kind: 'reading', gravity: 1.052, detail: { as_original_gravity: true } }), clock);
     expect(await told.og()).toBe(1.06);
     expect(entry.detail).not.toMatchObject({ as_original_gravity: true });
+  });
+});
+
+describe('a change of neck', () => {
+  it('that is taken back leaves what closed the neck before, though the log does not tell of that', async () => {
+    const brewer = await buildMember('brewer');
+    const batch = await buildBatch({ cellarId: brewer.cellarId, pitchedAt: new Date(NOON - 9 * 24 * HOUR), neck: 'airlock' });
+    const neck = async () => (await Batch.findByPk(batch.id, { rejectOnEmpty: true })).neck;
+    const swap = (to: string, hoursAgo: number) => createEntry(brewer, batch.id, log({ kind: 'neck', neck: to, at: isoAt(NOON - hoursAgo * HOUR), detail: { neck_before: 'open' } }), clock);
+    const bung = await swap('bung', 2);
+    await updateEntry(brewer, batch.id, bung.id, updateForm.parse({ text: 'by mistake', detail: {} }), clock);
+    const tube = await swap('blow_off', 1);
+    expect(await neck()).toBe('blow_off');
+    await removeEntry(brewer, batch.id, bung.id, clock);
+    expect(await neck()).toBe('blow_off');
+    await removeEntry(brewer, batch.id, tube.id, clock);
+    expect(await neck()).toBe('airlock');
+    // As from the set-up.
+    await updateBatch(brewer, batch.id, { neck: 'open' }, clock);
+    const { items } = await listEntries(brewer, batch.id, { limit: 1 });
+    await removeEntry(brewer, batch.id, items[0]!.id, clock);
+    expect(await neck()).toBe('airlock');
   });
 });
 

@@ -8,6 +8,7 @@ import { createBatch as batchForm, type BatchBody, type UpdateBatch } from '@/li
 import { InvalidError } from '@/lib/errors';
 import { auditBy } from '../audit/write';
 import { notifyChange } from '../changes';
+import { neckMark } from '../entries/effects';
 import { notAhead } from '../not-ahead';
 import { takeOut } from '../sensors/place';
 import { getBatch } from './get';
@@ -58,7 +59,7 @@ export async function updateBatch(actor: Actor, id: string, input: UpdateBatch, 
     batch.set(columnsOf(input));
     checkWhole(batch);
     if (input.pitched_at !== undefined) await movePitch(actor, batch, input.pitched_at, now, transaction);
-    if (batch.neck !== before) await Entry.create({ cellarId: actor.cellarId, batchId: id, kind: 'neck', at: now, neck: batch.neck, personId: actor.personId }, { transaction });
+    if (batch.neck !== before) await Entry.create({ cellarId: actor.cellarId, batchId: id, kind: 'neck', at: now, neck: batch.neck, detail: await neckMark({ id, neck: before }, transaction), personId: actor.personId }, { transaction });
     if (input.state !== undefined && input.state !== batch.state) {
       batch.set({ state: input.state, endedAt: input.state === 'ended' ? now : null });
       if (input.state === 'ended') await takeOut({ batchId: id }, now, transaction);

@@ -17,7 +17,7 @@ import { ledgerOf } from '../drink/ledger';
 import { broughtBy } from './brought';
 import { answerJobs } from '../jobs/answer';
 import { notAhead } from '../not-ahead';
-import { applyEntry, takeAsOriginal } from './effects';
+import { applyEntry, neckMark, takeAsOriginal } from './effects';
 import { namesOf } from './names';
 import { quieten, saidThen } from './overrule';
 import { presentEntry } from './present';
@@ -78,9 +78,9 @@ async function byRefractometer(batch: Batch, shown: number, sampleC: number | nu
 }
 
 /** What was told in detail, with what the program made of it. */
-function kept({ detail, gravity }: CreateEntry, original: boolean, said: NonNullable<EntryDetail['said']> | null): CreateEntry['detail'] {
-  const { as_original_gravity: _, said: _said, ...told } = detail ?? {};
-  const made = { ...told, ...(typeof told.brix === 'number' && gravity === null && { instrument: 'refractometer' as const }), ...(original && { as_original_gravity: true }), ...(said && { said }) };
+function kept({ detail, gravity }: CreateEntry, original: boolean, said: NonNullable<EntryDetail['said']> | null, marks: EntryDetail): CreateEntry['detail'] {
+  const { as_original_gravity: _, said: _said, neck_before: _neck, ...told } = detail ?? {};
+  const made = { ...told, ...(typeof told.brix === 'number' && gravity === null && { instrument: 'refractometer' as const }), ...(original && { as_original_gravity: true }), ...(said && { said }), ...marks };
   return Object.keys(made).length > 0 ? made : detail && null;
 }
 
@@ -101,6 +101,7 @@ export async function createEntry(actor: Actor, batchId: string, input: CreateEn
     return presentEntry(entry, actor, await namesOf([entry.personId], transaction));
 
     async function write(): Promise<Entry> {
+      const marks = input.neck === null ? {} : await neckMark(batch, transaction);
       await applyEntry(batch, input, transaction);
       const gravity = await gravityOf(batch, input, transaction);
       const said = input.kind === 'overrule' && input.detail?.call ? await saidThen(batch, input.detail.call, transaction) : null;
@@ -121,7 +122,7 @@ export async function createEntry(actor: Actor, batchId: string, input: CreateEn
           volumeL: input.volume_l,
           sugarG,
           fruitG,
-          detail: kept(input, original, said),
+          detail: kept(input, original, said, marks),
           personId: actor.personId,
           clientId: input.client_id,
         },

@@ -12,6 +12,17 @@ const LITRES_SLACK = 1e-6;
 
 const kept = (batchId: string) => ({ batchId, removedAt: { [Op.is]: null } });
 
+/** For the first entry that tells of the neck: what closed it before, to which the batch goes back where that is taken back. */
+export async function neckMark(batch: Pick<Batch, 'id' | 'neck'>, transaction: Transaction): Promise<Pick<EntryDetail, 'neck_before'>> {
+  return (await Entry.count({ where: { ...kept(batch.id), neck: { [Op.not]: null } }, transaction })) === 0 ? { neck_before: batch.neck } : {};
+}
+
+/** What closed the neck before the log told of it; null where nobody kept that. */
+async function neckBefore(batchId: string, transaction: Transaction): Promise<Batch['neck'] | null> {
+  const marked = await Entry.findOne({ where: { batchId, neck: { [Op.not]: null }, detail: { neck_before: { [Op.not]: null } } }, order: [['createdAt', 'ASC']], transaction });
+  return (marked?.detail as EntryDetail | null | undefined)?.neck_before ?? null;
+}
+
 /** Whether nothing of these kinds was logged for a later time: only the latest says how things stand. */
 async function isLatest(batchId: string, at: Date, kinds: string[], transaction: Transaction): Promise<boolean> {
   return (await Entry.count({ where: { ...kept(batchId), kind: kinds, at: { [Op.gt]: at } }, transaction })) === 0;
@@ -74,7 +85,7 @@ export async function settleBatch(batch: Batch, changed: Pick<Entry, 'kind' | 'n
     transaction,
   });
   if (changed.kind === 'pitch') batch.set('pitchedAt', left.findLast((entry) => entry.kind === 'pitch')?.at ?? null);
-  if (changed.neck !== null) batch.set('neck', left.findLast((entry) => entry.neck !== null)?.neck ?? batch.neck);
+  if (changed.neck !== null) batch.set('neck', left.findLast((entry) => entry.neck !== null)?.neck ?? (await neckBefore(batch.id, transaction)) ?? batch.neck);
   if (changed.volumeL !== null && VOLUME_KINDS.includes(changed.kind)) batch.set('volumeL', volumeAfter(left, batch));
   await batch.save({ transaction });
 }

@@ -89,8 +89,8 @@ export async function updateEntry(actor: Actor, batchId: string, entryId: string
 }
 
 function withMarks(detail: Before['detail'], was: Before['detail']): Before['detail'] {
-  const { as_original_gravity: _, said: _said, ...told } = detail ?? {};
-  const marks = { ...(was?.as_original_gravity && { as_original_gravity: true }), ...(was?.said && { said: was.said }) };
+  const { as_original_gravity: _, said: _said, neck_before: _neck, ...told } = detail ?? {};
+  const marks = { ...(was?.as_original_gravity && { as_original_gravity: true }), ...(was?.said && { said: was.said }), ...(was?.neck_before && { neck_before: was.neck_before }) };
   return detail || Object.keys(marks).length > 0 ? { ...told, ...marks } : null;
 }
 
