@@ -29,7 +29,8 @@ export function touches(change: Pick<Change, 'kind' | 'batch'>): (path: string) 
     case 'reading':
       return (path) => series(path) || shelf(path) || path.startsWith('/sensors');
     case 'assessment':
-      return (path) => (batch(path) && !series(path) && !log(path)) || shelf(path) || isPath('/batches')(path);
+      // A sensor's page says what the judgement holds of it.
+      return (path) => (batch(path) && !series(path) && !log(path)) || shelf(path) || isPath('/batches')(path) || /^\/sensors\/[^/]+\/health$/.test(path);
     case 'entry':
     case 'batch':
       return (path) => batch(path) || shelf(path) || isPath('/batches')(path);

@@ -14,8 +14,8 @@ describe('what a change makes a page ask for again', () => {
   });
 
   it('a judgement: the batch and its verdicts, not its readings or its log', () => {
-    for (const path of [`/batches/${BATCH}`, `/batches/${BATCH}/judgement`, `/batches/${BATCH}/assessments`, '/batches?state=working', '/shelf?from=a&to=b']) expect(asked('assessment', path), path).toBe(true);
-    for (const path of [`/batches/${BATCH}/series`, `/batches/${BATCH}/entries`, `/batches/${OTHER}`]) expect(asked('assessment', path), path).toBe(false);
+    for (const path of [`/batches/${BATCH}`, `/batches/${BATCH}/judgement`, `/batches/${BATCH}/assessments`, '/sensors/fs-abc/health', '/batches?state=working', '/shelf?from=a&to=b']) expect(asked('assessment', path), path).toBe(true);
+    for (const path of [`/batches/${BATCH}/series`, `/batches/${BATCH}/entries`, `/batches/${OTHER}`, '/sensors/fs-abc/readings?limit=20']) expect(asked('assessment', path), path).toBe(false);
   });
 
   it('an entry: all of its batch', () => {
