@@ -15,7 +15,7 @@ const FACTOR_95 = [1.15, 1.15, 1.15, 1.15, 1.8, 3.0];
 /** Half width of the 80 % interval of ln(time to the end + 12 h). */
 const DATE_80 = [0.61, 0.61, 0.62, 0.62, 0.69, 1.2];
 /** How late a curve and a tail are, by kind: from where the tail is asked for a beer and a cider; else where the yeast has alcohol to spare, and at its limit (about the middles on the tuning seeds). */
-const LATE = { beer: { curve: -0.15, tail: -0.15 }, cider: { curve: -0.15, tail: 0.25 }, withRoom: { curve: 0.33, tail: 0.25 }, from: 0.7, atTolerance: -0.15 };
+const LATE = { beer: { curve: -0.15, tail: -0.15 }, cider: { curve: -0.15, tail: 0.25 }, withRoom: { curve: 0.5, tail: 0.25 }, from: 0.7, atTolerance: -0.15 };
 
 interface Lateness {
   curve: number;
