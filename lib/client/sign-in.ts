@@ -27,8 +27,18 @@ export const signInWithPassword = ({ stay, code = '', ...form }: { email: string
 /** Signs in by the secret of a mailed link, which is used up by it. */
 export const signInByLink = (token: string, code = '') => attempt('link', { token, code });
 
+let leaving = false;
+/** Whether the person is on the way out: that the server knows nobody then is no news to them. */
+export const isSigningOut = (): boolean => leaving;
+
 /** Ends this sign-in and goes to the sign-in page; what was kept here of the person goes too. */
 export async function signOut(said?: 'deleted'): Promise<void> {
+  leaving = true;
   await Promise.allSettled([dropDevice(), forgetKept()]);
-  await endSession({ callbackUrl: said ? `/sign-in?said=${said}` : '/sign-in' });
+  try {
+    await endSession({ callbackUrl: said ? `/sign-in?said=${said}` : '/sign-in' });
+  } catch (error) {
+    leaving = false;
+    throw error;
+  }
 }

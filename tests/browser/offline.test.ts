@@ -308,6 +308,29 @@ describe('a sign-in that has ended', () => {
     await page.getByText('this page was not kept on this device').waitFor();
   });
 
+  it('goes one way out, also when the page hears first that nobody is signed in', async () => {
+    const made = await visit();
+    const { page } = made;
+    await onTheShelf(made);
+    await page.evaluate(() => {
+      const ask = window.fetch;
+      let heard = false;
+      window.fetch = async (...request) => {
+        const answer = await ask(...request);
+        const url = String(request[0]);
+        if (url.endsWith('/api/v1/me') && answer.status === 401) heard = true;
+        // The sign-in is over; the page is told of it before it has gone.
+        for (; url.endsWith('/signout') && !heard; await new Promise((done) => setTimeout(done, 200))) window.dispatchEvent(new Event('focus'));
+        if (url.endsWith('/signout')) await new Promise((done) => setTimeout(done, 500));
+        return answer;
+      };
+    });
+    await page.getByRole('button', { name: 'Wren H.' }).click();
+    await page.getByRole('button', { name: 'Sign out' }).click();
+    await page.waitForURL(/sign-in/);
+    expect(new URL(page.url()).search).toBe('');
+  });
+
   it('shows nobody what another person last saw on the same browser', async () => {
     const made = await visit();
     const { page, context } = made;
