@@ -6,7 +6,7 @@ import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, gasWords, rateWords } from './words';
 
 /** A fall beyond doubt that is more than this makes gas that a closed vessel must not keep, points a day (ours). */
-const WORKS_PER_DAY = 0.2;
+export const WORKS_PER_DAY = 0.2;
 const Z80 = 1.2816;
 
 /** A bung on a vessel that works, which can break it; null where it has none, or has not been seen to work. */

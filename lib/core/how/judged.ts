@@ -1,4 +1,5 @@
 /** Where the figures of a judgement come from: the batch page, the shelf and the rounds ask here. */
+import { WORKS_PER_DAY } from '../calls/neck';
 import { GAS_L_PER_L_PER_POINT, VOLUMES_PER_POINT } from '../gas/gas';
 import { ABOVE_END_POINTS, AT_REST_POINTS, RACK_PACE, RACK_POINTS, RACK_TAIL_POINTS } from '../stages/ending';
 import { BOTTLE_LEAST, BOTTLE_MOST, STALL_POINTS, STALL_ROOM } from '../stages/remaining';
@@ -79,7 +80,7 @@ export function howOfJudged(figure: JudgedFigure, from: JudgedFrom): How {
 /** The rule of each call, with what its limits are from. */
 const RULES: Record<CallName, { formula: string; source: Parameters<typeof how>[1] }> = {
   started: { formula: 'under way once the median of 6 hours lies 1.4 points (by hand 3) below its level at the pitch and goes on down; overdue after 48 h for beer, 72 h for the rest', source: SOURCES.ownRule },
-  neck: { formula: `gas: ${GAS_L_PER_L_PER_POINT} × litres × points a day ÷ 24. Limit: half the headspace ÷ the time that foam lives (beer 1 h, else 0.3 h), at most 2 L/h; it must stay under it for nine hours past the peak. Under a bung: a fall of more than 0.2 points a day, 9 times in 10`, source: SOURCES.foam },
+  neck: { formula: `gas: ${GAS_L_PER_L_PER_POINT} × litres × points a day ÷ 24. Limit: half the headspace ÷ the time that foam lives (beer 1 h, else 0.3 h), at most 2 L/h; it must stay under it for nine hours past the peak. Under a bung: a fall of more than ${WORKS_PER_DAY} points a day, 9 times in 10`, source: SOURCES.foam },
   stalled: { formula: 'stopped: under 0.5 points a day for 48 hours, or under 0.35 for 72, well above where the yeast’s range and tolerance let it end. Slow: under 2 points a day with more than 5 days to go', source: SOURCES.ownRule },
   temperature: { formula: `median of 3 hours: more than ${TEMPERATURE_MARGIN_C} °C outside the yeast’s range as told, until it is back inside`, source: SOURCES.told },
   rack: { formula: `at its expected end or near it, falling less than ${RACK_PACE} points a day, and at most ${RACK_POINTS} points that may still come, 9 times in 10 (${RACK_TAIL_POINTS} by the end of the record alone), at two looks in a row; where the sensor gives nothing, by its curve at half the pace`, source: SOURCES.ownRule },
