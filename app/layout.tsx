@@ -9,6 +9,7 @@ import './globals.css';
 import type { Metadata, Viewport } from 'next';
 import { headers } from 'next/headers';
 import type { ReactNode } from 'react';
+import { ShownTheme } from '@/components/ui/theme';
 import { THEME_SCRIPT } from '@/components/ui/theme-script';
 
 export const metadata: Metadata = {
@@ -30,7 +31,10 @@ export default async function RootLayout({ children }: { children: ReactNode }) 
       <head>
         <script nonce={nonce} suppressHydrationWarning dangerouslySetInnerHTML={{ __html: THEME_SCRIPT }} />
       </head>
-      <body>{children}</body>
+      <body>
+        <ShownTheme />
+        {children}
+      </body>
     </html>
   );
 }

@@ -9,7 +9,7 @@ import { Field } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
 import { useAct } from '@/components/ui/use-act';
 import { createCellar } from '@/lib/client/people';
-import { signOut } from '@/lib/client/sign-in';
+import { signOut, useWayOut } from '@/lib/client/sign-in';
 
 /** For somebody who belongs to no cellar (any more): make one, or wait to be invited. */
 export function Welcome({ id, name }: { id: string; name: string }) {
@@ -17,6 +17,7 @@ export function Welcome({ id, name }: { id: string; name: string }) {
   const { busy, failed, fields, act } = useAct();
   const device = useDeviceZone();
   const left = useLeft(id);
+  const stayed = useWayOut() === 'failed';
   const [cellar, setCellar] = useState('');
   const [chosen, setZone] = useState<string | null>(null);
   const zone = chosen ?? device;
@@ -44,6 +45,7 @@ export function Welcome({ id, name }: { id: string; name: string }) {
       <Button type="submit" look="first" size="tall" disabled={busy || cellar.trim() === ''}>
         Make it
       </Button>
+      {stayed && <FormError>You are still signed in. The server was not reached; sign out again once it is.</FormError>}
       <Button look="quiet" onClick={() => {
           forgetLeft();
           void signOut();

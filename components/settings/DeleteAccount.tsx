@@ -6,7 +6,7 @@ import { Field } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
 import { useAct } from '@/components/ui/use-act';
 import { deleteAccount, useAccount } from '@/lib/client/account';
-import { signOut } from '@/lib/client/sign-in';
+import { leaveBy } from '@/lib/client/sign-in';
 import type { AccountBody } from '@/lib/contracts/people';
 
 /** What becomes of the cellars, said before anything is asked. */
@@ -51,7 +51,7 @@ export function DeleteAccount() {
           noValidate
           onSubmit={(event) => {
             event.preventDefault();
-            void act(() => deleteAccount({ email: form.email, passphrase: form.passphrase, ...(form.code && { code: form.code }) })).then((done) => done && void signOut('deleted'));
+            void act(() => leaveBy(() => deleteAccount({ email: form.email, passphrase: form.passphrase, ...(form.code && { code: form.code }) }), 'deleted'));
           }}
         >
           <Field label={`type your address: ${account.email}`} type="email" autoComplete="off" value={form.email} error={fields.email} className="max-w-80" onChange={(event) => setForm({ ...form, email: event.target.value })} />

@@ -7,7 +7,7 @@ import { Haze } from '@/components/ui/Haze';
 import { ErrorState, FormError } from '@/components/ui/Notice';
 import { useNow } from '@/components/ui/now';
 import { endSignIn, signOutEverywhere, useMe, useSignIns } from '@/lib/client/me';
-import { signOut } from '@/lib/client/sign-in';
+import { leaveBy, signOut } from '@/lib/client/sign-in';
 import { browserWords } from './browser-words';
 
 /** Where the person is signed in, and the ways to end it. */
@@ -65,16 +65,7 @@ export function SignIns() {
         <Button onClick={() => void signOut()}>Sign out here</Button>
         {sure ? (
           <>
-            <Button
-              look="final"
-              disabled={busy}
-              onClick={() =>
-                void run(async () => {
-                  await signOutEverywhere();
-                  await signOut();
-                })
-              }
-            >
+            <Button look="final" disabled={busy} onClick={() => void run(() => leaveBy(signOutEverywhere))}>
               End all of them
             </Button>
             <Button onClick={() => setSure(false)}>Leave them</Button>

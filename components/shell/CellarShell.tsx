@@ -12,6 +12,7 @@ import { Header } from './Header';
 import { LeftBar } from './LeftBar';
 import { OfflineBar } from './OfflineBar';
 import { PhoneTabs } from './PhoneTabs';
+import { SignOutBar } from './SignOutBar';
 import { placesFor } from './places';
 import { useBelonging } from './use-belonging';
 import { useGlance } from './use-glance';
@@ -41,6 +42,7 @@ export function CellarShell({ units, children }: { units: ChosenUnits; children:
       <Header glance={glance} places={places} />
       <OfflineBar live={live} timeZone={glance.timeZone} />
       <LeftBar />
+      <SignOutBar />
       <main key={drawnFor} id="page" tabIndex={-1} className="pb-20 outline-none strip:pb-0 print:pb-0">
         {drawn ? children : <Haze height={240} className="mx-(--margin) mt-5" />}
       </main>

@@ -25,7 +25,14 @@ export function PersonMenu({ glance }: { glance: CellarGlance }) {
           <Link href="/settings/profile" className={MENU_ITEM} onClick={close}>
             Profile and units
           </Link>
-          <button type="button" className={`${MENU_ITEM} border-t`} onClick={() => void signOut()}>
+          <button
+            type="button"
+            className={`${MENU_ITEM} border-t`}
+            onClick={() => {
+              close();
+              void signOut();
+            }}
+          >
             Sign out
           </button>
         </>

@@ -3,7 +3,7 @@
 import { usePathname, useRouter } from 'next/navigation';
 import { useEffect, useRef } from 'react';
 import { onCellarChanged, useMe } from '@/lib/client/me';
-import { isSigningOut } from '@/lib/client/sign-in';
+import { useWayOut } from '@/lib/client/sign-in';
 import { noteLeft } from './left-cellar';
 
 /** A page of one thing of a cellar: a batch, a sensor, a lot. */
@@ -30,12 +30,13 @@ export function useBelonging(): void {
   const { me, error } = useMe();
   const router = useRouter();
   const path = usePathname();
+  const leaving = useWayOut() === 'going';
   const status = error?.status;
   const shown = useRef<{ id: string; name: string; person: string } | null>(null);
 
   useEffect(() => {
     // Two ways to the same page would break each other off, and the wrong one could be last.
-    if (isSigningOut()) return;
+    if (leaving) return;
     // The whole page goes, and with it whatever it still held of the cellar.
     /* eslint-disable @next/next/no-location-assign-relative-destination -- a router would keep the page's memory */
     if (status === 401) return onceNothingIsWritten(() => window.location.assign(`/sign-in?said=ended&next=${encodeURIComponent(window.location.pathname)}`));
@@ -44,7 +45,7 @@ export function useBelonging(): void {
       window.location.assign('/welcome');
     }
     /* eslint-enable @next/next/no-location-assign-relative-destination */
-  }, [status]);
+  }, [status, leaving]);
 
   useEffect(() => {
     if (!me) return;

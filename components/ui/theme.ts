@@ -1,6 +1,6 @@
 'use client';
 
-import { useSyncExternalStore } from 'react';
+import { useLayoutEffect, useSyncExternalStore } from 'react';
 import { NIGHT, THEME_KEY } from './theme-script';
 
 export const THEME_CHOICES = ['day', 'night', 'clock'] as const;
@@ -37,6 +37,12 @@ export function chooseTheme(choice: ThemeChoice): void {
     // Storage is closed to this page: the choice cannot be kept.
   }
   show();
+}
+
+/** The theme's script does not run where React draws the whole document itself, as after a page that fell over on the server. */
+export function ShownTheme(): null {
+  useLayoutEffect(show, []);
+  return null;
 }
 
 let following: ReturnType<typeof setInterval> | undefined;

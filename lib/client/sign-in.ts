@@ -1,6 +1,7 @@
 'use client';
 
 import { signIn, signOut as endSession } from 'next-auth/react';
+import { useSyncExternalStore } from 'react';
 import { dropDevice } from './push';
 import { forgetKept } from './worker';
 
@@ -27,18 +28,50 @@ export const signInWithPassword = ({ stay, code = '', ...form }: { email: string
 /** Signs in by the secret of a mailed link, which is used up by it. */
 export const signInByLink = (token: string, code = '') => attempt('link', { token, code });
 
-let leaving = false;
-/** Whether the person is on the way out: that the server knows nobody then is no news to them. */
-export const isSigningOut = (): boolean => leaving;
+/** On the way out the page takes no other way; `failed`: the server was not reached, and the person is still signed in. */
+type WayOut = 'none' | 'going' | 'failed';
+let wayOut: WayOut = 'none';
+const onlookers = new Set<() => void>();
 
-/** Ends this sign-in and goes to the sign-in page; what was kept here of the person goes too. */
-export async function signOut(said?: 'deleted'): Promise<void> {
-  leaving = true;
+function setWayOut(next: WayOut): void {
+  wayOut = next;
+  for (const onlooker of onlookers) onlooker();
+}
+
+function watchWayOut(onlooker: () => void): () => void {
+  onlookers.add(onlooker);
+  return () => onlookers.delete(onlooker);
+}
+
+export const useWayOut = (): WayOut => useSyncExternalStore(watchWayOut, () => wayOut, () => 'none');
+
+/** Goes to the sign-in page, once this sign-in is over; what was kept here of the person goes too. */
+async function goOut(said?: 'deleted'): Promise<void> {
   await Promise.allSettled([dropDevice(), forgetKept()]);
+  window.location.assign(said ? `/sign-in?said=${said}` : '/sign-in');
+}
+
+/** Ends this sign-in and leaves. Where the server is not reached the person stays, and is told: whoever took the device would be them. */
+export async function signOut(): Promise<void> {
+  setWayOut('going');
   try {
-    await endSession({ callbackUrl: said ? `/sign-in?said=${said}` : '/sign-in' });
+    await endSession({ redirect: false });
+  } catch {
+    return setWayOut('failed');
+  }
+  await goOut();
+}
+
+/** Leaves by a deed that ends this sign-in itself, as deleting the account does. Where it fails, the person stays, and the failure is thrown on. */
+export async function leaveBy(deed: () => Promise<unknown>, said?: 'deleted'): Promise<void> {
+  setWayOut('going');
+  try {
+    await deed();
   } catch (error) {
-    leaving = false;
+    setWayOut('none');
     throw error;
   }
+  // The server knows this sign-in no more; all that is left of it is a cookie.
+  await endSession({ redirect: false }).catch(() => undefined);
+  await goOut(said);
 }

@@ -1,7 +1,9 @@
 import { randomUUID } from 'node:crypto';
 import type { BrowserContext, Page } from 'playwright-core';
+import { Op } from 'sequelize';
 import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest';
 import { Batch, Entry, Job, Membership, SignIn } from '@/db/models';
+import { hashPassword } from '@/lib/auth/passwords';
 import { createMust } from '@/lib/services/musts/create';
 import { aSheet } from '../support/cellar';
 import { expectAccessible, expectNoSidewaysScroll, useBrowser, type Visit } from '../support/browser';
@@ -308,27 +310,75 @@ describe('a sign-in that has ended', () => {
     await page.getByText('this page was not kept on this device').waitFor();
   });
 
-  it('goes one way out, also when the page hears first that nobody is signed in', async () => {
-    const made = await visit();
-    const { page } = made;
-    await onTheShelf(made);
-    await page.evaluate(() => {
+  /** The page hears that nobody is signed in between the deed that ends the sign-in and the answer to it. */
+  const hearsFirst = (page: Page) =>
+    page.evaluate(() => {
       const ask = window.fetch;
       let heard = false;
       window.fetch = async (...request) => {
         const answer = await ask(...request);
         const url = String(request[0]);
         if (url.endsWith('/api/v1/me') && answer.status === 401) heard = true;
-        // The sign-in is over; the page is told of it before it has gone.
-        for (; url.endsWith('/signout') && !heard; await new Promise((done) => setTimeout(done, 200))) window.dispatchEvent(new Event('focus'));
-        if (url.endsWith('/signout')) await new Promise((done) => setTimeout(done, 500));
+        const ends = url.endsWith('/signout') || (request[1]?.method === 'DELETE' && (url.endsWith('/sign-ins') || url.endsWith('/account')));
+        for (; ends && answer.ok && !heard; await new Promise((done) => setTimeout(done, 200))) window.dispatchEvent(new Event('focus'));
+        if (ends) await new Promise((done) => setTimeout(done, 500));
         return answer;
       };
     });
+
+  it('goes one way out, also when the page hears first that nobody is signed in', async () => {
+    const made = await visit();
+    const { page } = made;
+    await onTheShelf(made);
+    await hearsFirst(page);
     await page.getByRole('button', { name: 'Wren H.' }).click();
     await page.getByRole('button', { name: 'Sign out' }).click();
     await page.waitForURL(/sign-in/);
     expect(new URL(page.url()).search).toBe('');
+  });
+
+  it('goes one way out of all its sign-ins', async () => {
+    const { page } = await visit();
+    await page.goto(`${web.url}/settings/security`);
+    await page.getByRole('button', { name: 'Sign out everywhere' }).click();
+    await hearsFirst(page);
+    await page.getByRole('button', { name: 'End all of them' }).click();
+    await page.waitForURL(/sign-in\b/);
+    expect(new URL(page.url()).search).toBe('');
+    expect(await SignIn.count({ where: { personId: wren.personId, endedAt: { [Op.is]: null } } })).toBe(0);
+  });
+
+  it('goes one way out of a deleted account', async () => {
+    const passphrase = 'seven slow white geese';
+    const leaver = await buildMember('brewer', { cellarId, name: 'Ivo Marl' });
+    await leaver.person.update({ passwordHash: await hashPassword(passphrase) });
+    const made = await browser.visitAs(leaver.personId, web.url);
+    visits.push(made);
+    const { page } = made;
+    await page.goto(`${web.url}/settings/profile`);
+    await page.getByRole('button', { name: 'Delete my account' }).click();
+    await page.getByLabel(/type your address/).fill(leaver.person.email);
+    await page.getByLabel('your passphrase', { exact: true }).last().fill(passphrase);
+    await hearsFirst(page);
+    await page.getByRole('button', { name: 'Delete it for good' }).click();
+    await page.waitForURL(/sign-in\b/);
+    expect(new URL(page.url()).search).toBe('?said=deleted');
+  });
+
+  it('says that the person is still signed in where the server is not reached', async () => {
+    const made = await visit();
+    const { page, context } = made;
+    await onTheShelf(made);
+    await context.setOffline(true);
+    await page.getByRole('button', { name: 'Wren H.' }).click();
+    await page.getByRole('button', { name: 'Sign out' }).click();
+    const bar = page.getByRole('status').filter({ hasText: 'You are still signed in.' });
+    await bar.waitFor();
+    expect(new URL(page.url()).pathname).toBe('/shelf');
+    await context.setOffline(false);
+    await bar.getByRole('button', { name: 'Sign out' }).click();
+    await page.waitForURL(/sign-in/);
+    await until('nothing kept', async () => (await names(page)).every((name) => name.startsWith('parts-')));
   });
 
   it('shows nobody what another person last saw on the same browser', async () => {

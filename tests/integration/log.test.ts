@@ -72,8 +72,10 @@ describe('a change of neck', () => {
     expect(await neck()).toBe('airlock');
     // As from the set-up.
     await updateBatch(brewer, batch.id, { neck: 'open' }, clock);
-    const { items } = await listEntries(brewer, batch.id, { limit: 1 });
-    await removeEntry(brewer, batch.id, items[0]!.id, clock);
+    await updateBatch(brewer, batch.id, { neck: 'blow_off' }, clock);
+    const { items } = await listEntries(brewer, batch.id, { limit: 2 });
+    expect(items.map(({ detail }) => detail).toSorted((a) => (a === null ? 1 : -1))).toEqual([{ neck_before: 'airlock' }, null]);
+    for (const { id } of items) await removeEntry(brewer, batch.id, id, clock);
     expect(await neck()).toBe('airlock');
   });
 });

@@ -78,10 +78,10 @@ async function byRefractometer(batch: Batch, shown: number, sampleC: number | nu
 }
 
 /** What was told in detail, with what the program made of it. */
-function kept({ detail, gravity }: CreateEntry, original: boolean, said: NonNullable<EntryDetail['said']> | null, marks: EntryDetail): CreateEntry['detail'] {
+function kept({ detail, gravity }: CreateEntry, original: boolean, said: NonNullable<EntryDetail['said']> | null, marks: EntryDetail | null): CreateEntry['detail'] {
   const { as_original_gravity: _, said: _said, neck_before: _neck, ...told } = detail ?? {};
   const made = { ...told, ...(typeof told.brix === 'number' && gravity === null && { instrument: 'refractometer' as const }), ...(original && { as_original_gravity: true }), ...(said && { said }), ...marks };
-  return Object.keys(made).length > 0 ? made : detail && null;
+  return Object.keys(made).length > 0 ? made : null;
 }
 
 /**
@@ -101,7 +101,7 @@ export async function createEntry(actor: Actor, batchId: string, input: CreateEn
     return presentEntry(entry, actor, await namesOf([entry.personId], transaction));
 
     async function write(): Promise<Entry> {
-      const marks = input.neck === null ? {} : await neckMark(batch, transaction);
+      const marks = input.neck === null ? null : await neckMark(batch, transaction);
       await applyEntry(batch, input, transaction);
       const gravity = await gravityOf(batch, input, transaction);
       const said = input.kind === 'overrule' && input.detail?.call ? await saidThen(batch, input.detail.call, transaction) : null;

@@ -12,9 +12,9 @@ const LITRES_SLACK = 1e-6;
 
 const kept = (batchId: string) => ({ batchId, removedAt: { [Op.is]: null } });
 
-/** For the first entry that tells of the neck: what closed it before, to which the batch goes back where that is taken back. */
-export async function neckMark(batch: Pick<Batch, 'id' | 'neck'>, transaction: Transaction): Promise<Pick<EntryDetail, 'neck_before'>> {
-  return (await Entry.count({ where: { ...kept(batch.id), neck: { [Op.not]: null } }, transaction })) === 0 ? { neck_before: batch.neck } : {};
+/** For the first entry that tells of the neck: what closed it before, to which the batch goes back where that is taken back. Null for the later ones. */
+export async function neckMark(batch: Pick<Batch, 'id' | 'neck'>, transaction: Transaction): Promise<Pick<EntryDetail, 'neck_before'> | null> {
+  return (await Entry.count({ where: { ...kept(batch.id), neck: { [Op.not]: null } }, transaction })) === 0 ? { neck_before: batch.neck } : null;
 }
 
 /** What closed the neck before the log told of it; null where nobody kept that. */
