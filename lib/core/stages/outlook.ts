@@ -3,7 +3,7 @@ import type { Tail } from '../series/tail';
 import { abvBalling } from '../strength/strength';
 import { sgOf } from '../units/convert';
 import { Figures } from './figures';
-import { bottleMost, bottlePoints, held, mixed, remaining, shareOfTail, type Remaining } from './remaining';
+import { bottleMost, bottlePoints, held, mixed, remaining, shareLetPass, shareOfTail, type Remaining } from './remaining';
 
 /** Hours between two views of the tail, which hardly changes from look to look. */
 const TAIL_H = 6;
@@ -104,7 +104,10 @@ export class Outlook extends Figures {
 
   /** Points that may still come, seven times in ten, when it may be bottled. What was stabilised at rest does not go on to where its yeast ends. */
   bottlePoints(): number {
-    return bottlePoints(this.aboveYeastsEnd(), this.spreadOfYeastsEnd());
+    const points = bottlePoints(this.aboveYeastsEnd(), this.spreadOfYeastsEnd());
+    if (this.sweetHeld()) return points;
+    const { fruit, restarted: added } = this.segment;
+    return points * shareLetPass({ fruit, added, ofTolerance: this.burden(this.levelNow()) });
   }
 
   /** What may still come is little for bottles. */

@@ -14,6 +14,18 @@ export function bottlePoints(above: number, spread: number): number {
   return BOTTLE_MOST - height * (BOTTLE_MOST - BOTTLE_LEAST);
 }
 
+/** What comes late comes slowly: share of those points that is let pass where fruit gives up its sugar, after sugar was added, and near the alcohol that the yeast bears; and how near that is, by share (own simulations). */
+export const LATE_FRUIT = 0.6;
+export const LATE_SUGAR = 0.7;
+export const NEAR_TOLERANCE = 0.7;
+export const NEAR_TOLERANCE_FROM = 0.9;
+
+/** Share of the points that is let pass, 0 to 1, by what makes the last of a fall slow. `ofTolerance`: alcohol by share of what the yeast bears; null where nobody said. */
+export function shareLetPass({ fruit, added, ofTolerance }: { fruit: boolean; added: boolean; ofTolerance: number | null }): number {
+  const late = fruit ? LATE_FRUIT : added ? LATE_SUGAR : 1;
+  return ofTolerance !== null && ofTolerance > NEAR_TOLERANCE_FROM ? late * NEAR_TOLERANCE : late;
+}
+
 /** Points that may still come, nine times in ten, when it may be bottled: less than make a volume of gas, and of what may have stalled hardly more than seven times in ten. */
 export function bottleMost(above: number, spread: number): number {
   return above > STALL_POINTS ? STALL_ROOM * bottlePoints(above, spread) : 1 / VOLUMES_PER_POINT;

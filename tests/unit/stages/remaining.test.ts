@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { BOTTLE_LEAST, BOTTLE_MOST, bottleMost, bottlePoints, STALL_POINTS, STALL_ROOM, held, mixed, remaining, shareOfTail } from '../../../lib/core/stages/remaining';
+import { BOTTLE_LEAST, BOTTLE_MOST, LATE_FRUIT, LATE_SUGAR, NEAR_TOLERANCE, NEAR_TOLERANCE_FROM, bottleMost, bottlePoints, STALL_POINTS, STALL_ROOM, held, mixed, remaining, shareLetPass, shareOfTail } from '../../../lib/core/stages/remaining';
 
 describe('what may still come of a batch to be bottled', () => {
   it('is less the higher it rests above where its yeast ends, and no more below that', () => {
@@ -43,5 +43,18 @@ describe('what is still to fall', () => {
     expect(shareOfTail(curve, 0)).toBe(1);
     expect(shareOfTail(curve, -3)).toBe(1);
     expect(shareOfTail({ og: 10, fg: 10 }, 10)).toBe(1);
+  });
+});
+
+describe('the share of it that is let pass', () => {
+  const plain = { fruit: false, added: false, ofTolerance: null };
+  it('is less where the last of a fall is slow, least where that has two reasons', () => {
+    expect(shareLetPass(plain)).toBe(1);
+    expect(shareLetPass({ ...plain, added: true })).toBe(LATE_SUGAR);
+    expect(shareLetPass({ ...plain, added: true, fruit: true })).toBe(LATE_FRUIT);
+    expect(shareLetPass({ ...plain, ofTolerance: NEAR_TOLERANCE_FROM })).toBe(1);
+    expect(shareLetPass({ ...plain, ofTolerance: 0.95 })).toBe(NEAR_TOLERANCE);
+    expect(shareLetPass({ added: true, fruit: true, ofTolerance: 1 })).toBeCloseTo(LATE_FRUIT * NEAR_TOLERANCE, 12);
+    expect(LATE_FRUIT).toBeLessThan(LATE_SUGAR);
   });
 });
