@@ -153,7 +153,7 @@ describe('what is done to a drink', () => {
     await comes.getByText('Much air above it').waitFor();
     await page.getByLabel('How much').fill('0.6');
     await comes.getByText('It fits').waitFor();
-    const [, gravity, strength] = /(1\.\d{3}), (\d+\.\d %)/.exec(await comes.innerText())!;
+    const [, gravity, strength] = /(1\.\d{3}), (\d+\.\d %)/.exec(await comes.getByText(/1\.\d{3}, \d+\.\d %/).first().innerText())!;
     await page.getByRole('button', { name: 'Racked', exact: true }).click();
     await page.getByText('Done and logged.').waitFor();
     const said = await page.getByText(/became/).innerText();
