@@ -9,7 +9,7 @@ import { Field } from '@/components/ui/Field';
 import { FormError } from '@/components/ui/Notice';
 import { useAct } from '@/components/ui/use-act';
 import { createCellar } from '@/lib/client/people';
-import { signOut, useWayOut } from '@/lib/client/sign-in';
+import { SIGN_OUT_AGAIN, signOut, useWayOut } from '@/lib/client/sign-in';
 
 /** For somebody who belongs to no cellar (any more): make one, or wait to be invited. */
 export function Welcome({ id, name }: { id: string; name: string }) {
@@ -45,11 +45,8 @@ export function Welcome({ id, name }: { id: string; name: string }) {
       <Button type="submit" look="first" size="tall" disabled={busy || cellar.trim() === ''}>
         Make it
       </Button>
-      {stayed && <FormError>You are still signed in. The server was not reached; sign out again once it is.</FormError>}
-      <Button look="quiet" onClick={() => {
-          forgetLeft();
-          void signOut();
-        }}>
+      {stayed && <FormError>You are still signed in. {SIGN_OUT_AGAIN}</FormError>}
+      <Button look="quiet" onClick={() => void signOut().then((gone) => gone && forgetLeft())}>
         Sign out
       </Button>
     </form>

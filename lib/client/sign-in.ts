@@ -51,15 +51,23 @@ async function goOut(said?: 'deleted'): Promise<void> {
   window.location.assign(said ? `/sign-in?said=${said}` : '/sign-in');
 }
 
-/** Ends this sign-in and leaves. Where the server is not reached the person stays, and is told: whoever took the device would be them. */
-export async function signOut(): Promise<void> {
+/** What they are told then, after the words that they are still signed in. */
+export const SIGN_OUT_AGAIN = 'The server was not reached; sign out again once it is.';
+
+/** Puts the word away that signing out did not come about. */
+export const staySignedIn = (): void => setWayOut('none');
+
+/** Ends this sign-in and leaves. Where the server is not reached the person stays, and is told: whoever took the device would be them. Whether they left. */
+export async function signOut(): Promise<boolean> {
   setWayOut('going');
   try {
     await endSession({ redirect: false });
   } catch {
-    return setWayOut('failed');
+    setWayOut('failed');
+    return false;
   }
   await goOut();
+  return true;
 }
 
 /** Leaves by a deed that ends this sign-in itself, as deleting the account does. Where it fails, the person stays, and the failure is thrown on. */

@@ -85,7 +85,7 @@ function judgementOf(watch: Watch, at: Instant, hour: number, picture: boolean):
     lo: gasLPerH(ratePointsPerDay.lo, setup.volumeL),
     hi: gasLPerH(ratePointsPerDay.hi, setup.volumeL),
   };
-  const temperature = silent ? null : track.temperature(hour - 3, hour);
+  const temperature = silent ? null : watch.temperatureNow();
   const scene: Scene = { watch, at, hour, timeZone: setup.timeZone ?? 'UTC', level, rate, gas, temperature, silentH, silent };
   const calls: Record<CallName, Call> = {
     started: startedCall(scene),

@@ -3,6 +3,7 @@ import { assess } from './assess';
 import { finalGravityHalfWidths, progressBin } from './fit/intervals';
 import { namesOf } from './fit/models';
 import { accept } from './series/bins';
+import { chanceOf, LATE_POINTS, logOddsOfLateFall } from './stages/late-fall';
 import { Run } from './stages/run';
 import type { Watch } from './stages/watch';
 import { CALL_NAMES } from './types';
@@ -64,7 +65,20 @@ function curveLines(watch: Watch): string[] {
   if (long) lines.push(`Longer tail, whose pace wanes: ${fixed(long.remaining)} ± ${fixed(long.sd)} points to come`);
   const left = watch.remainingNow();
   if (left) lines.push(`Still to come, all told: ${fixed(left.value)} ± ${fixed(left.sd)} points`);
+  lines.push(...lateFallLines(watch));
   return lines;
+}
+
+/** What the chance of a late fall is weighed from, and what of it there is now. */
+function lateFallLines(watch: Watch): string[] {
+  const chance = watch.chanceOfLateFall();
+  const figures = chance === null ? null : watch.restFigures();
+  if (chance === null || !figures) return [];
+  const { most, likely, spread, belowTop, since2, since8 } = figures;
+  return [
+    `Chance that more than ${LATE_POINTS} point is to come: ${fixed(100 * chance, 1)} % as the mean of about a day, ${fixed(100 * chanceOf(logOddsOfLateFall(figures)), 1)} % at this look`,
+    `  from: at most ${fixed(most)} points to come (9 in 10), ${fixed(likely)} likely by the longer tail, yeast's end known within ${fixed(spread)}, ${fixed(belowTop, 1)} below the top of the end, 2 points higher ${fixed(100 * since2, 0)} % and 8 points higher ${fixed(100 * since8, 0)} % of its age ago`,
+  ];
 }
 
 function ruleLines(watch: Watch): string[] {

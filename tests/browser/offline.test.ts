@@ -375,6 +375,11 @@ describe('a sign-in that has ended', () => {
     const bar = page.getByRole('status').filter({ hasText: 'You are still signed in.' });
     await bar.waitFor();
     expect(new URL(page.url()).pathname).toBe('/shelf');
+    await bar.getByRole('button', { name: 'Stay' }).click();
+    await bar.waitFor({ state: 'detached' });
+    await page.getByRole('button', { name: 'Wren H.' }).click();
+    await page.getByRole('button', { name: 'Sign out' }).click();
+    await bar.waitFor();
     await context.setOffline(false);
     await bar.getByRole('button', { name: 'Sign out' }).click();
     await page.waitForURL(/sign-in/);

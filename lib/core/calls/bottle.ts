@@ -1,8 +1,12 @@
 import type { Call } from '../types';
 import { VOLUMES_PER_POINT } from '../gas/gas';
+import { BOTTLE_CHANCE, LATE_POINTS } from '../stages/late-fall';
 import type { Remaining } from '../stages/remaining';
 import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, fallingWords, gravityWords, pointsWords, rateWords } from './words';
+
+/** No chance is told as less, %: what was learnt from simulations is not surer than that. */
+const SUREST_PERCENT = 1;
 
 /** What may still fall; null without a level. */
 function leftToCome(scene: Scene): Remaining | null {
@@ -20,15 +24,16 @@ export function bottleCall(scene: Scene): Call {
   const { watch, level, rate } = scene;
   const top = watch.zoneTop();
   const left = leftToCome(scene);
-  const atMost = watch.bottlePoints();
+  const chance = watch.chanceOfLateFall();
   const worst = worstExtraVolumes(scene);
   const figures = [
     ...(level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG')]),
-    ...(left === null ? [] : [evidence('may still fall, 7 times in 10', Math.max(0, left.likely), atMost, 'points')]),
+    ...(chance === null ? [] : [evidence(`chance of more than ${pointsWords(LATE_POINTS)} to come`, Math.max(SUREST_PERCENT, Math.ceil(100 * chance)), 100 * BOTTLE_CHANCE, '%')]),
+    ...(left === null ? [] : [evidence('may still fall, 7 times in 10', Math.max(0, left.likely), null, 'points')]),
     ...(rate ? [evidence('fall', Math.max(0, rate.value), 0.5, 'points/d')] : []),
     ...(worst === null ? [] : [evidence('worst extra carbonation', worst, 1, 'volumes')]),
   ];
-  const changesIt = `Changes it: ${gravityWords(top)} or less, and at most ${pointsWords(atMost)} that may still fall, 7 times in 10.`;
+  const changesIt = `Changes it: ${gravityWords(top)} or less for days, and a chance of ${Math.round(100 * BOTTLE_CHANCE)} % at most that more than ${pointsWords(LATE_POINTS)} is to come.`;
   if (watch.refermenting.on) {
     const fallen = level !== null && watch.plateau !== null ? pointsWords(watch.plateau - level) : 'More than 1.5 points';
     return call('hold', 'Do not bottle: it works again.', `${fallen} below where it had come to rest.`, {

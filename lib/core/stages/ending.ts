@@ -1,7 +1,9 @@
 import { VOLUMES_PER_POINT } from '../gas/gas';
 import type { Line } from '../series/line';
+import { BOTTLE_CHANCE, CHANCE_MEMORY_H, chanceOf, logOddsOfLateFall } from './late-fall';
 import { hold, never } from './latch';
 import { CURVE_PAST_DAYS, Peak } from './peak';
+import { TAIL_H } from './outlook';
 import type { Remaining } from './remaining';
 
 /** Points that may still come, nine times in ten, when a batch may be racked and when it is called finished. */
@@ -26,11 +28,16 @@ const QUIET_PACE = 1 / 3;
 export const ABOVE_END_POINTS = 1.2;
 const ABOVE_YEAST_POINTS = 6;
 export const AT_REST_POINTS = 0.6;
+/** Hours between two weighings of the chance of a late fall in what was called ready, where it decides nothing (ours). */
+const READY_WEIGHED_H = 48;
 /** Points that make a volume of gas in a closed bottle. */
 const VOLUME_POINTS = 1 / VOLUMES_PER_POINT;
 
 /** The rules of the end: finished, to be racked, to be bottled. */
 export class Ending extends Peak {
+  /** Log odds that more than a point still comes, as a mean over the last looks, and when it was taken. */
+  private lateFall: { hour: number; odds: number } | null = null;
+
   protected judgeEnd(hour: number): void {
     const level = this.levelNow();
     const line24 = this.line(24);
@@ -59,14 +66,35 @@ export class Ending extends Peak {
     }
 
     const still = slow && (inside || this.restsJustAbove(ground)) && upper48 < BOTTLE_PACE && !this.rising.on && !this.refermenting.on && !sugary && this.quietSinceAddition(120, 168);
+    const rests = still && !this.mayOnlyBeCold();
+    this.weighLateFall(hour, rests);
     hold(
       this.bottle,
       hour,
-      () => still && !this.mayOnlyBeCold() && this.isLittleForBottles(this.remainingNow()) && this.threeQuietDays() && this.bothEndsSaySo(),
+      () => rests && this.leavesLess(VOLUME_POINTS) && this.threeQuietDays() && this.lateFall !== null && chanceOf(this.lateFall.odds) < BOTTLE_CHANCE,
       2,
       // A steady small fall shows in what it leaves to come, a whole volume of gas, before two days of it are beyond doubt.
       () => (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on || (slow && this.remainingNow() !== null && !this.leavesLess(VOLUME_POINTS)),
     );
+  }
+
+  /** Chance that more than a point still comes of a batch at rest, 0 to 1; null where it does not rest. */
+  chanceOfLateFall(): number | null {
+    return this.lateFall && chanceOf(this.lateFall.odds);
+  }
+
+  /** The odds of a late fall as they have been for about a day, since it came to rest; what was called ready keeps them while it is not asked. */
+  private weighLateFall(hour: number, rests: boolean): void {
+    if (!rests) {
+      if (!this.bottle.on) this.lateFall = null;
+      return;
+    }
+    if (this.lateFall && hour - this.lateFall.hour < (this.bottle.on ? READY_WEIGHED_H : TAIL_H)) return;
+    const figures = this.restFigures();
+    const now = figures && logOddsOfLateFall(figures);
+    const before = this.lateFall;
+    const kept = before ? Math.exp((before.hour - hour) / CHANCE_MEMORY_H) : 0;
+    this.lateFall = now === null ? null : { hour, odds: kept * (before?.odds ?? 0) + (1 - kept) * now };
   }
 
   /** Less than so many points may still come, nine times in ten. */
@@ -85,11 +113,6 @@ export class Ending extends Peak {
   private leavesLittle(): boolean {
     const left = this.leftOnCurve();
     return left !== null && (left.most < RACK_POINTS || (this.tailTells() && this.leavesLess(RACK_TAIL_POINTS)));
-  }
-
-  /** Little is left by the shorter end of the record, which sees a late fall, and by the longer, which is seldom deceived. */
-  private bothEndsSaySo(): boolean {
-    return this.isLittleForBottles(this.longRemaining());
   }
 
   private longLeavesLess(points: number): boolean {

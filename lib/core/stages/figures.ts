@@ -13,6 +13,9 @@ import { held } from './remaining';
 /** Standard deviation of a hydrometer reading by hand, points (our own). */
 export const HAND_SD = 0.7;
 
+/** Hours of which the present temperature is the median. */
+const TEMPERATURE_H = 3;
+
 /** Fall of temperature within two to four days, °C, from which on it has turned cold (ours). */
 const COOLED_C = 4;
 
@@ -128,6 +131,11 @@ export class Figures {
   levelNow(): number | null {
     if (this.levelMemo === undefined) this.levelMemo = this.measureLevel();
     return this.levelMemo;
+  }
+
+  /** Temperature now, °C: the median of three hours, or of the last word of a float that speaks more seldom; null with none. */
+  temperatureNow(): number | null {
+    return this.track.temperature(this.lookedAt - Math.max(TEMPERATURE_H, 1.2 * this.track.spacing), this.lookedAt);
   }
 
   /** Where it last was known to stand, points, while the float gives nothing: by its last sound word, or by the hydrometer since. */

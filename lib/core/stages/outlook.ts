@@ -3,10 +3,13 @@ import type { Tail } from '../series/tail';
 import { abvBalling } from '../strength/strength';
 import { sgOf } from '../units/convert';
 import { Figures } from './figures';
-import { bottleMost, bottlePoints, held, mixed, remaining, shareLetPass, shareOfTail, type Remaining } from './remaining';
+import type { RestFigures } from './late-fall';
+import { held, mixed, remaining, shareOfTail, type Remaining } from './remaining';
 
 /** Hours between two views of the tail, which hardly changes from look to look. */
-const TAIL_H = 6;
+export const TAIL_H = 6;
+/** Youngest age of a stretch that was begun by an addition, hours, by which its tail is judged. */
+const SHORTEST_AGE_H = 72;
 
 /** Share of the fall that is done when the tail is asked for what is left. */
 const NEAR_END = 0.8;
@@ -20,6 +23,7 @@ export class Outlook extends Figures {
   private remainingMemo: Remaining | null | undefined;
   private tailCache: TailCache | null = null;
   private longTailCache: TailCache | null = null;
+  private readonly halfDays = new Map<number, number | null>();
 
   protected override forget(): void {
     super.forget();
@@ -29,6 +33,7 @@ export class Outlook extends Figures {
   protected override recordChanged(): void {
     this.tailCache = null;
     this.longTailCache = null;
+    this.halfDays.clear();
     super.recordChanged();
   }
 
@@ -48,7 +53,7 @@ export class Outlook extends Figures {
     const now = Math.floor(this.lookedAt / TAIL_H + 1e-9) * TAIL_H;
     if (cache?.at === now) return cache;
     const { from, restarted } = this.segment;
-    const own = restarted ? Math.max(72, now - from) : now;
+    const own = restarted ? Math.max(SHORTEST_AGE_H, now - from) : now;
     // A yeast that was fed at work is as tired as the whole batch is old, and its sugar as young as the feed; one that had come to rest begins anew.
     const age = restarted && !this.sweetened ? Math.sqrt(own * now) : own;
     return { at: now, tail: this.track.tail(Math.max(96, Math.min(mostH, share * own)), restarted ? from + 24 : 0, now, age, wanes) };
@@ -102,22 +107,47 @@ export class Outlook extends Figures {
     return remaining(both.value, both.sd);
   }
 
-  /** Points that may still come, seven times in ten, when it may be bottled. What was stabilised at rest does not go on to where its yeast ends. */
-  bottlePoints(): number {
-    const points = bottlePoints(this.aboveYeastsEnd(), this.spreadOfYeastsEnd());
-    if (this.sweetHeld()) return points;
-    const { fruit, restarted: added } = this.segment;
-    return points * shareLetPass({ fruit, added, ofTolerance: this.burden(this.levelNow()) });
-  }
-
-  /** What may still come is little for bottles. */
-  protected isLittleForBottles(left: Remaining | null): boolean {
-    return left !== null && left.likely < this.bottlePoints() && left.most < bottleMost(this.aboveYeastsEnd(), this.spreadOfYeastsEnd());
-  }
-
-  private aboveYeastsEnd(): number {
+  /** What tells whether a batch at rest has ended; null where the record is too short for its two ends. */
+  restFigures(): RestFigures | null {
     const level = this.levelNow();
-    return level === null || this.sweetHeld() ? 0 : level - this.fgPrior().mean;
+    const short = this.tail();
+    const long = short && this.longTail();
+    if (level === null || short === null || long === null) return null;
+    const { from, restarted } = this.segment;
+    const ageH = restarted ? Math.max(SHORTEST_AGE_H, this.lookedAt - from) : this.lookedAt;
+    const [since2, since8] = this.hoursSinceHigher(level).map((hours) => Math.min(1, (hours ?? ageH) / ageH));
+    return {
+      most: Math.max(this.againstRange(level, short).most, this.againstRange(level, long).most),
+      likely: long.likely,
+      spread: this.spreadOfYeastsEnd(),
+      // What was stabilised at rest does not go on to where its yeast ends.
+      belowTop: this.sweetHeld() ? 0 : this.zoneTop() - level,
+      since2: since2!,
+      since8: since8!,
+    };
+  }
+
+  /** Hours since the level of half a day was last 2 and 8 points higher than now; null where this stretch never was. */
+  private hoursSinceHigher(level: number): [number | null, number | null] {
+    const stop = this.segment.restarted ? this.segment.from + 12 : 0;
+    let since2: number | null = null;
+    for (let hour = Math.floor(this.lookedAt / TAIL_H) * TAIL_H - TAIL_H; hour > stop; hour -= TAIL_H) {
+      const past = this.halfDayAt(hour);
+      if (past === null) continue;
+      const higher = this.track.calibrate(past) - level;
+      if (higher >= 2) since2 ??= this.lookedAt - hour;
+      if (higher >= 8) return [since2, this.lookedAt - hour];
+    }
+    return [since2, null];
+  }
+
+  /** Uncalibrated level of the half day about an hour that has passed, points; a batch that rests is asked for it at every look. */
+  private halfDayAt(hour: number): number | null {
+    const known = this.halfDays.get(hour);
+    if (known !== undefined) return known;
+    const level = this.track.level(hour - 6, hour + 6);
+    this.halfDays.set(hour, level);
+    return level;
   }
 
   private spreadOfYeastsEnd(): number {

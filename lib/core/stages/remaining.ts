@@ -1,36 +1,3 @@
-import { VOLUMES_PER_POINT } from '../gas/gas';
-
-/** Points that may still come, seven times in ten, when a batch may be bottled that rests no higher than where its yeast ends, and of one two spreads above that (ours). */
-export const BOTTLE_MOST = 0.9;
-export const BOTTLE_LEAST = 0.62;
-const HIGH_SPREADS = 2;
-/** Points above where its yeast ends from which what rests may have stalled, and by how much more than that may come nine times in ten there (ours). */
-export const STALL_POINTS = 3;
-export const STALL_ROOM = 1.37;
-
-/** The same for a level so many points above where its yeast ends, which is known to `spread`: what rests high is more often only slow. */
-export function bottlePoints(above: number, spread: number): number {
-  const height = Math.min(1, Math.max(0, above / (HIGH_SPREADS * spread)));
-  return BOTTLE_MOST - height * (BOTTLE_MOST - BOTTLE_LEAST);
-}
-
-/** What comes late comes slowly: share of those points that is let pass where fruit gives up its sugar, after sugar was added, and near the alcohol that the yeast bears; and how near that is, by share (own simulations). */
-export const LATE_FRUIT = 0.6;
-export const LATE_SUGAR = 0.7;
-export const NEAR_TOLERANCE = 0.7;
-export const NEAR_TOLERANCE_FROM = 0.9;
-
-/** Share of the points that is let pass, 0 to 1, by what makes the last of a fall slow. `ofTolerance`: alcohol by share of what the yeast bears; null where nobody said. */
-export function shareLetPass({ fruit, added, ofTolerance }: { fruit: boolean; added: boolean; ofTolerance: number | null }): number {
-  const late = fruit ? LATE_FRUIT : added ? LATE_SUGAR : 1;
-  return ofTolerance !== null && ofTolerance > NEAR_TOLERANCE_FROM ? late * NEAR_TOLERANCE : late;
-}
-
-/** Points that may still come, nine times in ten, when it may be bottled: less than make a volume of gas, and of what may have stalled hardly more than seven times in ten. */
-export function bottleMost(above: number, spread: number): number {
-  return above > STALL_POINTS ? STALL_ROOM * bottlePoints(above, spread) : 1 / VOLUMES_PER_POINT;
-}
-
 /** Points still to fall, how well that is known, and the most it may be seven times and nine times in ten. */
 export interface Remaining {
   value: number;

@@ -50,7 +50,7 @@ export class Watch extends Ending {
   /** Out of its range by more than the margin, until it is back inside: at the limit it must not flicker. */
   private judgeTemperature(hour: number): void {
     const range = this.setup.temperature;
-    const now = range && this.track.temperature(hour - 3, hour);
+    const now = range && this.temperatureNow();
     if (!range || now === null) return;
     hold(this.tooCold, hour, () => now < range.minC - TEMPERATURE_MARGIN_C, 1, () => now >= range.minC);
     hold(this.tooWarm, hour, () => now > range.maxC + TEMPERATURE_MARGIN_C, 1, () => now <= range.maxC);

@@ -159,6 +159,26 @@ describe('the calls', () => {
     for (const day of [16, 20, 24, 28, 32]) expect(at(day, slow.filter((reading) => reading.at <= PITCH + day * DAY), wrong).calls.bottle.verdict, `day ${day}`).not.toBe('yes');
   });
 
+  it('show the chance of a late fall of what rests: over its limit while the fall is young, under it once ready, and none while it works', () => {
+    const slow = (day: number): number => modelGravity('kinetic', [55, -1, -2.2, 0.2, -1.2, -1], day);
+    const bottleOn = (day: number) => at(day, record(day, slow)).calls.bottle;
+    const chanceOn = (day: number) => bottleOn(day).evidence.find((item) => item.unit === '%');
+    expect(chanceOn(12)).toBeUndefined();
+    const ready = Array.from({ length: 20 }, (_, i) => 18 + i).find((day) => bottleOn(day).verdict === 'yes')!;
+    const before = chanceOn(ready - 2)!;
+    expect(before.value).toBeGreaterThan(before.threshold!);
+    expect(bottleOn(ready - 2).changesIt).toMatch(/a chance of 10 % at most/);
+    expect(chanceOn(ready)!.value).toBeLessThanOrEqual(before.threshold!);
+    // No figure of ours is surer than a hundred to one.
+    expect(chanceOn(ready + 12)!.value).toBe(1);
+  });
+
+  it('know the temperature between the words of a float that speaks every six hours', () => {
+    const seldom = record(10, cider).filter((_, index) => index % 12 === 0);
+    for (const hours of [0, 2, 4, 5]) expect(at(8 + hours / 24, seldom.filter((reading) => reading.at <= PITCH + 8 * DAY)).calls.temperature.verdict, `${hours} h`).toBe('no');
+    expect(at(9.8, seldom.filter((reading) => reading.at <= PITCH + 8 * DAY)).calls.temperature.verdict).toBe('unknown');
+  });
+
   it('take "ready" back when a batch that has rested for weeks begins to fall', () => {
     // From day 45.1, between two of the judgements that a resting batch is given.
     const readings = record(49, (day) => cider(Math.min(day, 45.1)) - 1.2 * Math.max(0, day - 45.1));
