@@ -3,7 +3,7 @@ import { assess } from './assess';
 import { finalGravityHalfWidths, progressBin } from './fit/intervals';
 import { namesOf } from './fit/models';
 import { accept } from './series/bins';
-import { chanceOf, LATE_POINTS, logOddsOfLateFall } from './stages/late-fall';
+import { chanceOf, LATE_IN_BOTTLE, logOddsOfLateFall } from './stages/late-fall';
 import { Run } from './stages/run';
 import type { Watch } from './stages/watch';
 import { CALL_NAMES } from './types';
@@ -76,7 +76,7 @@ function lateFallLines(watch: Watch): string[] {
   if (chance === null || !figures) return [];
   const { most, likely, spread, belowTop, since2, since8 } = figures;
   return [
-    `Chance that more than ${LATE_POINTS} point is to come: ${fixed(100 * chance, 1)} % as the mean of about a day, ${fixed(100 * chanceOf(logOddsOfLateFall(figures)), 1)} % at this look`,
+    `Chance that more than ${LATE_IN_BOTTLE.points} point is to come: ${fixed(100 * chance, 1)} % as the mean of about a day, ${fixed(100 * chanceOf(logOddsOfLateFall(LATE_IN_BOTTLE, figures)), 1)} % at this look`,
     `  from: at most ${fixed(most)} points to come (9 in 10), ${fixed(likely)} likely by the longer tail, yeast's end known within ${fixed(spread)}, ${fixed(belowTop, 1)} below the top of the end, 2 points higher ${fixed(100 * since2, 0)} % and 8 points higher ${fixed(100 * since8, 0)} % of its age ago`,
   ];
 }

@@ -1,6 +1,6 @@
 import type { Call } from '../types';
 import { VOLUMES_PER_POINT } from '../gas/gas';
-import { BOTTLE_CHANCE, LATE_POINTS } from '../stages/late-fall';
+import { LATE_IN_BOTTLE } from '../stages/late-fall';
 import type { Remaining } from '../stages/remaining';
 import { later, sinceOf, when, type Scene } from './scene';
 import { call, evidence, fallingWords, gravityWords, pointsWords, rateWords } from './words';
@@ -28,12 +28,12 @@ export function bottleCall(scene: Scene): Call {
   const worst = worstExtraVolumes(scene);
   const figures = [
     ...(level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG')]),
-    ...(chance === null ? [] : [evidence(`chance of more than ${pointsWords(LATE_POINTS)} to come`, Math.max(SUREST_PERCENT, Math.ceil(100 * chance)), 100 * BOTTLE_CHANCE, '%')]),
+    ...(chance === null ? [] : [evidence(`chance of more than ${pointsWords(LATE_IN_BOTTLE.points)} to come`, Math.max(SUREST_PERCENT, Math.ceil(100 * chance)), 100 * LATE_IN_BOTTLE.chance, '%')]),
     ...(left === null ? [] : [evidence('may still fall, 7 times in 10', Math.max(0, left.likely), null, 'points')]),
     ...(rate ? [evidence('fall', Math.max(0, rate.value), 0.5, 'points/d')] : []),
     ...(worst === null ? [] : [evidence('worst extra carbonation', worst, 1, 'volumes')]),
   ];
-  const changesIt = `Changes it: ${gravityWords(top)} or less for days, and a chance of ${Math.round(100 * BOTTLE_CHANCE)} % at most that more than ${pointsWords(LATE_POINTS)} is to come.`;
+  const changesIt = `Changes it: ${gravityWords(top)} or less for days, and a chance of ${Math.round(100 * LATE_IN_BOTTLE.chance)} % at most that more than ${pointsWords(LATE_IN_BOTTLE.points)} is to come.`;
   if (watch.refermenting.on) {
     const fallen = level !== null && watch.plateau !== null ? pointsWords(watch.plateau - level) : 'More than 1.5 points';
     return call('hold', 'Do not bottle: it works again.', `${fallen} below where it had come to rest.`, {

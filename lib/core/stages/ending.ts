@@ -1,16 +1,12 @@
 import { VOLUMES_PER_POINT } from '../gas/gas';
 import type { Line } from '../series/line';
-import { BOTTLE_CHANCE, CHANCE_MEMORY_H, chanceOf, logOddsOfLateFall } from './late-fall';
+import { CHANCE_MEMORY_H, chanceOf, LATE_IN_BOTTLE, LATE_WHEN_FINISHED, logOddsOfLateFall } from './late-fall';
 import { hold, never } from './latch';
 import { CURVE_PAST_DAYS, Peak } from './peak';
 import { TAIL_H } from './outlook';
-import type { Remaining } from './remaining';
 
-/** Points that may still come, nine times in ten, when a batch may be racked and when it is called finished. */
+/** Points that may still come, nine times in ten, when a batch may be racked. */
 export const RACK_POINTS = 4.4;
-const TERMINAL_POINTS = 1.9;
-/** The same by the longer end of the record, whose pace wanes. */
-const TERMINAL_LONG_POINTS = 2.8;
 /** The same where the end of the record says so by itself, while a curve that goes too deep still holds back (ours). */
 export const RACK_TAIL_POINTS = 3;
 /** Points left by the curve alone, at half its pace, when a batch may be racked whose float gives nothing, and when it is taken to have ended (ours). */
@@ -55,7 +51,7 @@ export class Ending extends Peak {
 
     const sugary = level !== null && this.sweetStill(level);
     const wasDone = this.terminal.on;
-    hold(this.terminal, hour, () => slow && upper48 < TERMINAL_PACE && !sugary && this.quietSinceAddition(60, 120) && this.leavesLess(TERMINAL_POINTS) && this.longLeavesLess(TERMINAL_LONG_POINTS), 1, () => (lower48 !== null && lower48 > 0.8) || this.refermenting.on);
+    hold(this.terminal, hour, () => slow && upper48 < TERMINAL_PACE && !sugary && this.quietSinceAddition(60, 120) && this.hardlyFallsOn(), 2, () => (lower48 !== null && lower48 > 0.8) || this.refermenting.on);
     if (this.terminal.on && !wasDone) this.plateau = level;
 
     if (this.terminal.on) hold(this.rack, hour, () => true, 2, never);
@@ -71,7 +67,7 @@ export class Ending extends Peak {
     hold(
       this.bottle,
       hour,
-      () => rests && this.leavesLess(VOLUME_POINTS) && this.threeQuietDays() && this.lateFall !== null && chanceOf(this.lateFall.odds) < BOTTLE_CHANCE,
+      () => rests && this.leavesLess(VOLUME_POINTS) && this.threeQuietDays() && this.lateFall !== null && chanceOf(this.lateFall.odds) < LATE_IN_BOTTLE.chance,
       2,
       // A steady small fall shows in what it leaves to come, a whole volume of gas, before two days of it are beyond doubt.
       () => (lower48 !== null && lower48 > 0.5) || this.rising.on || this.refermenting.on || (slow && this.remainingNow() !== null && !this.leavesLess(VOLUME_POINTS)),
@@ -91,7 +87,7 @@ export class Ending extends Peak {
     }
     if (this.lateFall && hour - this.lateFall.hour < (this.bottle.on ? READY_WEIGHED_H : TAIL_H)) return;
     const figures = this.restFigures();
-    const now = figures && logOddsOfLateFall(figures);
+    const now = figures && logOddsOfLateFall(LATE_IN_BOTTLE, figures);
     const before = this.lateFall;
     const kept = before ? Math.exp((before.hour - hour) / CHANCE_MEMORY_H) : 0;
     this.lateFall = now === null ? null : { hour, odds: kept * (before?.odds ?? 0) + (1 - kept) * now };
@@ -115,16 +111,10 @@ export class Ending extends Peak {
     return left !== null && (left.most < RACK_POINTS || (this.tailTells() && this.leavesLess(RACK_TAIL_POINTS)));
   }
 
-  private longLeavesLess(points: number): boolean {
-    const left = this.longRemaining();
-    return left !== null && left.most < points;
-  }
-
-  /** What is still to come by the longer end of the record. */
-  private longRemaining(): Remaining | null {
-    const level = this.levelNow();
-    const long = this.tail() && this.longTail();
-    return level === null || long === null ? null : this.againstRange(level, long);
+  /** It has as good as ended: little chance of more than two points. */
+  private hardlyFallsOn(): boolean {
+    const figures = this.restFigures();
+    return figures !== null && chanceOf(logOddsOfLateFall(LATE_WHEN_FINISHED, figures)) < LATE_WHEN_FINISHED.chance;
   }
 
   /** The float is stuck or silent. */

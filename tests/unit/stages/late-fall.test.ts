@@ -1,11 +1,16 @@
 import { describe, expect, it } from 'vitest';
-import { chanceOf, logOddsOfLateFall, type RestFigures } from '../../../lib/core/stages/late-fall';
+import { chanceOf, LATE_IN_BOTTLE, LATE_WHEN_FINISHED, logOddsOfLateFall, type RestFigures } from '../../../lib/core/stages/late-fall';
 
 /** Rests a little below the top of its end, and has for a third of its age. */
 const rests: RestFigures = { most: 1, likely: 0.4, spread: 2, belowTop: 3, since2: 0.3, since8: 0.5 };
-const chance = (other: Partial<RestFigures> = {}): number => chanceOf(logOddsOfLateFall({ ...rests, ...other }));
 
-describe('the chance that more than a point is still to come', () => {
+it('of two points is smaller than that of one', () => {
+  expect(logOddsOfLateFall(LATE_WHEN_FINISHED, rests)).toBeLessThan(logOddsOfLateFall(LATE_IN_BOTTLE, rests));
+});
+
+describe.each([LATE_IN_BOTTLE, LATE_WHEN_FINISHED])('the chance that more than $points point(s) are still to come', (fall) => {
+  const chance = (other: Partial<RestFigures> = {}): number => chanceOf(logOddsOfLateFall(fall, { ...rests, ...other }));
+
   it('is even at even odds, and nothing or all at the ends', () => {
     expect(chanceOf(0)).toBe(0.5);
     expect(chanceOf(-40)).toBeCloseTo(0, 12);
@@ -26,7 +31,7 @@ describe('the chance that more than a point is still to come', () => {
   });
 
   it('goes by proportions: twice the points change the odds by the same factor, from wherever they stood', () => {
-    const by = (a: Partial<RestFigures>, b: Partial<RestFigures>) => logOddsOfLateFall({ ...rests, ...b }) - logOddsOfLateFall({ ...rests, ...a });
+    const by = (a: Partial<RestFigures>, b: Partial<RestFigures>) => logOddsOfLateFall(fall, { ...rests, ...b }) - logOddsOfLateFall(fall, { ...rests, ...a });
     expect(by({ most: 1 }, { most: 2 })).toBeCloseTo(by({ most: 0.5 }, { most: 1 }), 12);
     expect(by({ since2: 0.2 }, { since2: 0.4 })).toBeCloseTo(by({ since2: 0.4 }, { since2: 0.8 }), 12);
     expect(by({ belowTop: 1 }, { belowTop: 2 })).toBeCloseTo(by({ belowTop: 7 }, { belowTop: 8 }), 12);
