@@ -61,6 +61,7 @@ function ends(item: Evidence, og: number | null): Pick<RulerParts, 'from' | 'to'
   const limit = item.threshold ?? item.value;
   if (item.unit === 'SG') return { from: Math.min(item.value, limit) - 0.01, to: Math.max(og ?? 0, item.value, limit) + 0.004 };
   if (item.unit === '°C') return { from: Math.floor(Math.min(item.value, limit) - 4), to: Math.ceil(Math.max(item.value, limit) + 4) };
+  if (item.unit === '%') return { from: 0, to: 100 };
   // A pace below nothing stands at the ruler's end.
   return { from: 0, to: undefined };
 }

@@ -28,7 +28,7 @@ export function bottleCall(scene: Scene): Call {
   const worst = worstExtraVolumes(scene);
   const figures = [
     ...(level === null ? [] : [evidence('gravity', 1 + level / 1000, 1 + top / 1000, 'SG')]),
-    ...(chance === null ? [] : [evidence(`chance of more than ${pointsWords(LATE_IN_BOTTLE.points)} to come`, Math.max(SUREST_PERCENT, Math.ceil(100 * chance)), 100 * LATE_IN_BOTTLE.chance, '%')]),
+    ...(chance === null ? [] : [evidence('chance of a late fall', Math.max(SUREST_PERCENT, Math.ceil(100 * chance)), 100 * LATE_IN_BOTTLE.chance, '%')]),
     ...(left === null ? [] : [evidence('may still fall, 7 times in 10', Math.max(0, left.likely), null, 'points')]),
     ...(rate ? [evidence('fall', Math.max(0, rate.value), 0.5, 'points/d')] : []),
     ...(worst === null ? [] : [evidence('worst extra carbonation', worst, 1, 'volumes')]),
