@@ -79,8 +79,11 @@ describe('the ruler of a call', () => {
     expect(thresholdsOf(call(), null)).toBeNull();
   });
 
-  it('holds a gravity between its own ends, never from zero', () => {
+  it('holds a chance between nothing and certainty', () => {
     expect(rulerOf('bottle', call({ evidence: [{ name: 'chance of a late fall', value: 83, threshold: 10, unit: '%' }] }), 1.068)).toMatchObject({ says: '83 %', limitSays: '10 % at most', good: 'below', from: 0, to: 100 });
+  });
+
+  it('holds a gravity between its own ends, never from zero', () => {
     const ruler = rulerOf('rack', call({ evidence: [{ name: 'gravity', value: 1.041, threshold: 1.021, unit: 'SG' }] }), 1.068)!;
     expect(ruler.from).toBeGreaterThan(0.95);
     expect(ruler.from).toBeLessThan(1.021);
