@@ -193,10 +193,12 @@ describe('ten thousand malformed packets and messages', () => {
     expect(await count('refusals', bad.id)).toBe(refused + 2_000);
     expect(await count('readings', own.id)).toBe(latencies.length);
     latencies.sort((a, b) => a - b);
-    const growth = (await broker.memory()) - before;
-    console.log(`10,000 malformed: a good sensor's p99 ${latencies[Math.floor(latencies.length * 0.99)]!.toFixed(0)} ms, memory ${(growth / MB).toFixed(1)} MB more`);
+    const grown = async () => (await broker.memory()) - before;
+    const atOnce = await grown();
+    // What is only rubbish goes within seconds of quiet; what is held on to stays.
+    await until('the memory to be as it was', async () => (await grown()) < 50 * MB, 30_000);
+    console.log(`10,000 malformed: a good sensor's p99 ${latencies[Math.floor(latencies.length * 0.99)]!.toFixed(0)} ms, memory ${(atOnce / MB).toFixed(1)} MB more at once, ${((await grown()) / MB).toFixed(1)} MB at rest`);
     expect(latencies[Math.floor(latencies.length * 0.99)]).toBeLessThan(1_000);
-    expect(growth).toBeLessThan(50 * MB);
   });
 });
 
